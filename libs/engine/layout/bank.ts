@@ -1,0 +1,57 @@
+/** A group of equal stages as the site file gives it. */
+export interface StageGroupInput {
+  count: number;
+  /** nameplate kvar of one stage at `ratedV` [kvar] */
+  ratedKvar: number;
+  /** nameplate voltage, line to line [V] */
+  ratedV: number;
+  /** reactor ratio p = X_L / X_C at the fundamental [%], 0 = plain */
+  reactorPct?: number;
+  /** X_L / R_L at the fundamental */
+  reactorQuality?: number;
+  /** resistor fitted across a delta phase [Ω] */
+  dischargeOhm?: number;
+  /** reactor's rated rms current [A] */
+  reactorMaxA?: number;
+  /** peak current the switch is stated to make [A] */
+  switchPeakA?: number;
+  /** never switched */
+  fixed?: boolean;
+  /** nameplate capacitance of one delta phase [µF] */
+  capacitanceUf?: number;
+  /** nameplate inductance of one reactor phase [mH] */
+  reactorMh?: number;
+}
+
+/** A bank as the site file gives it. */
+export interface BankInput {
+  stages: StageGroupInput[];
+  /** inductance between stages, per phase [µH] */
+  interStageUh?: number;
+  ambientCategory?: 'A' | 'B' | 'C' | 'D';
+  /** a price book's switch kind */
+  switchKind?: string;
+}
+
+/** A group of equal stages with defaults filled in; reactances per phase, star equivalent. */
+export interface StageGroup {
+  count: number;
+  ratedKvar: number;
+  ratedV: number;
+  /** reactor ratio p, 0 … below 100 [%] */
+  reactorPct: number;
+  reactorQuality: number;
+  dischargeOhm: number | null;
+  reactorMaxA: number | null;
+  switchPeakA: number | null;
+  fixed: boolean;
+}
+
+/** A bank ready to be simulated and judged. */
+export interface Bank {
+  groups: StageGroup[];
+  interStageUh: number;
+  /** false where `interStageUh` is the customary value */
+  interStageGiven: boolean;
+  ambientCategory: 'A' | 'B' | 'C' | 'D' | null;
+}

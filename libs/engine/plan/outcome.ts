@@ -1,0 +1,79 @@
+import type { Bank } from '../layout/bank.js';
+import type { Loads } from '../network/loads.js';
+import type { LoadRecord } from '../record/load-record.js';
+import type { ZoneTable } from '../record/zone-table.js';
+import type { Supply } from '../supply/supply.js';
+import type { Result } from './result.js';
+import type { RecordedBank, RuleSet } from './site.js';
+
+/** The site with every default filled in. */
+export interface SettledSite {
+  name: string;
+  asOf: string | null;
+  timeZone: string;
+  currency: string | null;
+  rules: RuleSet;
+  frequencyHz: number;
+  nominalV: number;
+  highestV: number;
+  meteredAt: 'bus' | 'primary';
+  recordedBank: RecordedBank;
+  targetPowerFactor: number;
+  onExport: 'importOnly' | 'absolute';
+  supply: Supply;
+  loads: Loads;
+  emcClass: 1 | 2 | 3;
+}
+
+/** Columns of the simulated record, one entry a valid interval, length n. */
+export interface OperationSeries {
+  /** UTC epoch seconds of the beginning [s] */
+  beginS: Float64Array;
+  /** active power at the bus [kW] */
+  busKw: Float64Array;
+  /** the load's own net reactive power at the bus, lagging > 0 [kvar] */
+  busKvar: Float64Array;
+  /** kvar needed at the bus for the target at the meter [kvar] */
+  needKvar: Float64Array;
+  /** effective kvar connected [kvar] */
+  connectedKvar: Float64Array;
+  /** after the bank, at the meter [kW] */
+  meterKw: Float64Array;
+  /** after the bank, at the meter [kvar] */
+  meterLaggingKvar: Float64Array;
+  /** after the bank, at the meter [kvar] */
+  meterLeadingKvar: Float64Array;
+}
+
+/** Harmonic voltage as a share of its own limit, worst over every corner. */
+export interface MarginMap {
+  /** ascending, 0 included [kvar] */
+  levelsKvar: number[];
+  /** orders with a limit, ascending */
+  ordersH: number[];
+  /** [level][order], % of the limit */
+  sharePct: number[][];
+}
+
+/** The same kvar built the other way (without reactors where the bank has them), for comparison on the same scales. */
+export interface Rival {
+  bank: Bank;
+  verdict: 'clear' | 'watch' | 'avoid';
+  margins: MarginMap;
+  /** levels at which a limit is exceeded in some corner, and levels above 0 in all */
+  levelsOver: number;
+  levelsAll: number;
+}
+
+/** Everything a page or a paper needs: the settled inputs, the result and the series behind it. */
+export interface Outcome {
+  kind: 'plan' | 'assess';
+  site: SettledSite;
+  record: LoadRecord;
+  zone: ZoneTable;
+  bank: Bank;
+  result: Result;
+  series: OperationSeries;
+  margins: MarginMap;
+  rival: Rival | null;
+}

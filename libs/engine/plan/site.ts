@@ -1,0 +1,43 @@
+import type { BankInput } from '../layout/bank.js';
+import type { CatalogueInput } from '../layout/catalogue.js';
+import type { Finance, PriceBook, Tariff } from '../money/papers.js';
+import type { LoadsInput } from '../network/loads.js';
+import type { Control } from '../operation/control.js';
+import type { SupplyInput } from '../supply/supply.js';
+
+/** Which limit tables and which discharge and conductor rules apply. */
+export type RuleSet = 'iec' | 'ieee';
+
+/** Was a bank working while the record was taken. */
+export type RecordedBank =
+  | { state: 'none' }
+  | { state: 'out' }
+  | { state: 'fixed'; kvar: number }
+  | { state: 'logged' }
+  | { state: 'switching' }
+  | { state: 'unknown' };
+
+/** The site file once it is validated: plain numbers in the unit of each name; optional parts as given. */
+export interface Site {
+  name: string;
+  /** local date "2026-01-31", held against validity dates */
+  asOf?: string;
+  /** IANA name */
+  timeZone: string;
+  currency?: string;
+  rules: RuleSet;
+  frequencyHz: number;
+  bus: { nominalV: number; highestV?: number };
+  meteredAt?: 'bus' | 'primary';
+  recordedBank?: RecordedBank;
+  target?: { powerFactor?: number; onExport?: 'importOnly' | 'absolute' };
+  control?: Partial<Control>;
+  supply: SupplyInput;
+  loads?: LoadsInput;
+  bank?: BankInput;
+  limits?: { emcClass?: 1 | 2 | 3 };
+  tariff?: Tariff;
+  prices?: PriceBook;
+  catalogue?: CatalogueInput;
+  finance?: Finance;
+}
