@@ -1,0 +1,123 @@
+// Runs a program of dist, after building it where a source has changed since.
+//   node .config/built.mjs                     builds where needed
+//   node .config/built.mjs apps/cli/main.js …  builds where needed, then runs the program with the rest as its arguments
+// Says nothing on stdout: that belongs to the program.
+import { spawnSync } from 'node:child_process';
+import { copyFileSync, existsSync, mkdirSync, readdirSync, readFileSync, rmSync, statSync, writeFileSync } from 'node:fs';
+import { dirname, join, relative } from 'node:path';
+import { fileURLToPath, pathToFileURL } from 'node:url';
+
+const root = fileURLToPath(new URL('..', import.meta.url));
+const dist = join(root, 'dist');
+const stampFile = join(dist, '.built');
+const lockFile = join(root, 'node_modules', '.varwright-build');
+const sourceFolders = ['apps/server', 'apps/cli', 'libs', 'migrations'];
+const settings = ['package.json', 'tsconfig.json', '.config/tsconfig.build.json'];
+
+const [program, ...args] = process.argv.slice(2);
+buildIfNeeded();
+if (program !== undefined) {
+  const path = join(dist, program);
+  process.argv = [process.argv[0] ?? 'node', path, ...args];
+  await import(pathToFileURL(path).href);
+}
+
+function buildIfNeeded() {
+  if (isCurrent()) return;
+  takeLock();
+  try {
+    if (!isCurrent()) build();
+  } finally {
+    rmSync(lockFile, { force: true });
+  }
+}
+
+function isCurrent() {
+  return existsSync(stampFile) && readFileSync(stampFile, 'utf8') === stampOf(sourceFiles());
+}
+
+function build() {
+  const files = sourceFiles();
+  const stamp = stampOf(files);
+  const tsc = join(root, 'node_modules', 'typescript', 'bin', 'tsc');
+  const done = spawnSync(process.execPath, [tsc, '-p', join(root, '.config', 'tsconfig.build.json')], {
+    stdio: ['ignore', 2, 2],
+  });
+  if (done.status !== 0) {
+    process.stderr.write('the build failed\n');
+    process.exit(1);
+  }
+  copyAssets(files);
+  removeOrphans();
+  writeFileSync(stampFile, stamp);
+}
+
+/** Every file the build depends on, as paths from the root. */
+function sourceFiles() {
+  const found = settings.filter((file) => existsSync(join(root, file)));
+  for (const folder of sourceFolders) {
+    if (!existsSync(join(root, folder))) continue;
+    for (const entry of readdirSync(join(root, folder), { recursive: true, withFileTypes: true })) {
+      const path = relative(root, join(entry.parentPath, entry.name));
+      if (entry.isFile() && !path.endsWith('.spec.ts') && !path.endsWith('.md')) found.push(path);
+    }
+  }
+  return found.sort();
+}
+
+/** @param {string[]} files */
+function stampOf(files) {
+  const facts = files.map((file) => {
+    const { mtimeMs, size } = statSync(join(root, file));
+    return `${file} ${mtimeMs} ${size}`;
+  });
+  return `${process.version}\n${facts.join('\n')}\n`;
+}
+
+/** What is not TypeScript (data, pages, pictures) stands in dist where it stands in the source. */
+/** @param {string[]} files */
+function copyAssets(files) {
+  for (const file of files) {
+    if (file.endsWith('.ts') || settings.includes(file)) continue;
+    mkdirSync(dirname(join(dist, file)), { recursive: true });
+    copyFileSync(join(root, file), join(dist, file));
+  }
+}
+
+/** A module whose source is gone must not go on being found. */
+function removeOrphans() {
+  for (const entry of readdirSync(dist, { recursive: true, withFileTypes: true })) {
+    if (!entry.isFile() || entry.name.startsWith('.')) continue;
+    const path = relative(dist, join(entry.parentPath, entry.name));
+    const source = path.replace(/\.js(\.map)?$/, '.ts');
+    if (sourceFolders.some((folder) => path.startsWith(`${folder}/`)) && !existsSync(join(root, source))) {
+      rmSync(join(dist, path));
+    }
+  }
+}
+
+/** Two commands started at once build one after the other; the second then finds the work done. */
+function takeLock() {
+  const nap = new Int32Array(new SharedArrayBuffer(4));
+  for (;;) {
+    try {
+      writeFileSync(lockFile, String(process.pid), { flag: 'wx' });
+      return;
+    } catch (error) {
+      if (!(error instanceof Error && 'code' in error && error.code === 'EEXIST')) throw error;
+    }
+    if (!ownerLives()) rmSync(lockFile, { force: true });
+    else Atomics.wait(nap, 0, 0, 100);
+  }
+}
+
+function ownerLives() {
+  try {
+    const owner = Number(readFileSync(lockFile, 'utf8'));
+    // An empty file is a lock being written at this moment.
+    if (owner !== 0) process.kill(owner, 0);
+    return true;
+  } catch (error) {
+    return error instanceof Error && 'code' in error && error.code === 'EPERM';
+  }
+}

@@ -1,0 +1,44 @@
+import { fileURLToPath } from 'node:url';
+import { defaultServerConditions } from 'vite';
+import { defineConfig } from 'vitest/config';
+
+// 'import' or 'default' in this list would reach Node itself and make it load the wrong build of some packages.
+const conditions = ['source', ...defaultServerConditions];
+const soak = process.env.VARWRIGHT_SOAK === '1';
+const withDatabases = ['libs/store/**/*.spec.ts', 'libs/jobs/**/*.spec.ts', 'apps/server/**/*.spec.ts'];
+const startPostgres = ['test/support/postgres.ts'];
+
+const project = (name: string, include: string[], timeoutMs: number, more: object = {}) => ({
+  extends: true as const,
+  test: {
+    name,
+    include,
+    testTimeout: soak ? 3_600_000 : timeoutMs,
+    hookTimeout: soak ? 3_600_000 : 60_000,
+    ...more,
+  },
+});
+
+export default defineConfig({
+  root: fileURLToPath(new URL('..', import.meta.url)),
+  resolve: { conditions },
+  ssr: { resolve: { conditions } },
+  test: {
+    pool: 'forks',
+    projects: [
+      project(
+        'unit',
+        [
+          'libs/**/*.spec.ts',
+          'apps/**/*.spec.ts',
+          'test/{oracle,property,architecture}/**/*.spec.ts',
+          'test/support/**/*.spec.ts',
+        ],
+        20_000,
+        { exclude: withDatabases },
+      ),
+      project('store', withDatabases, 30_000, { globalSetup: startPostgres }),
+      project('whole', ['test/{golden,api,faults,browser}/**/*.spec.ts'], 120_000, { globalSetup: startPostgres }),
+    ],
+  },
+});
