@@ -24,18 +24,20 @@ const sourceFolders = ['apps/server', 'apps/cli', 'libs', 'migrations'];
 const settings = ['package.json', 'tsconfig.json', '.config/tsconfig.build.json'];
 
 const [program, ...args] = process.argv.slice(2);
-buildIfNeeded();
-if (program !== undefined) {
+if (!buildIfNeeded()) {
+  process.stderr.write('the build failed\n');
+  process.exitCode = 1;
+} else if (program !== undefined) {
   const path = join(dist, program);
   process.argv = [process.argv[0] ?? 'node', path, ...args];
   await import(pathToFileURL(path).href);
 }
 
 function buildIfNeeded() {
-  if (isCurrent()) return;
+  if (isCurrent()) return true;
   takeLock();
   try {
-    if (!isCurrent()) build();
+    return isCurrent() || build();
   } finally {
     rmSync(lockFile, { force: true });
   }
@@ -48,17 +50,16 @@ function isCurrent() {
 function build() {
   const files = sourceFiles();
   const stamp = stampOf(files);
+  rmSync(stampFile, { force: true });
   const tsc = join(root, 'node_modules', 'typescript', 'bin', 'tsc');
   const done = spawnSync(process.execPath, [tsc, '-p', join(root, '.config', 'tsconfig.build.json')], {
     stdio: ['ignore', 2, 2],
   });
-  if (done.status !== 0) {
-    process.stderr.write('the build failed\n');
-    process.exit(1);
-  }
+  if (done.status !== 0) return false;
   copyAssets(files);
   removeOrphans();
   writeFileSync(stampFile, stamp);
+  return true;
 }
 
 /** Every file the build depends on, as paths from the root. */
@@ -83,8 +84,10 @@ function stampOf(files) {
   return `${process.version}\n${facts.join('\n')}\n`;
 }
 
-/** What is not TypeScript (data, pages, pictures) stands in dist where it stands in the source. */
-/** @param {string[]} files */
+/**
+ * What is not TypeScript (data, pages, pictures) stands in dist where it stands in the source.
+ * @param {string[]} files
+ */
 function copyAssets(files) {
   for (const file of files) {
     if (file.endsWith('.ts') || settings.includes(file)) continue;
