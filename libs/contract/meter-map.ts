@@ -51,7 +51,9 @@ export interface MeterMap {
   headerRow?: number;
   /** each column as its number counted from 1, or as its name in the header row */
   columns?: Partial<Record<MeterColumn, number | string>>;
-  units?: Partial<Record<'active' | 'exported' | 'reactive' | 'lagging' | 'leading' | 'voltage' | 'connected', MeterUnit>>;
+  units?: Partial<
+    Record<'active' | 'exported' | 'reactive' | 'lagging' | 'leading' | 'voltage' | 'connected', MeterUnit>
+  >;
   /** what columns without a unit of their own hold: means in kW and kvar, or energies in kWh and kvarh */
   quantity?: 'power' | 'energy';
   /** which sign of a signed reactive column is lagging */
