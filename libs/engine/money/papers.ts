@@ -160,7 +160,7 @@ export interface Tariff {
   /** local dates "2024-12-25" */
   holidays?: string[];
   windows?: TariffWindow[];
-  clauses: Clause[];
+  clauses?: Clause[];
   /** totals of real bills, by month "2024-01" */
   billed?: { month: string; total: number }[];
 }
@@ -180,7 +180,7 @@ export interface PriceBook {
   name?: string;
   /** true where the prices are made up */
   invented?: boolean;
-  currency: string;
+  currency?: string;
   /** local date "2026-01-01" */
   validFrom?: string;
   /** local date "2026-12-31" */

@@ -1,0 +1,48 @@
+import * as z from 'zod';
+import { METER_COLUMNS, METER_UNITS, type MeterMap } from './meter-map.js';
+import { label, quantity, whole } from './schema-parts.js';
+import { readBySchema } from './schema-problems.js';
+import { isTimeZone } from './time-zone.js';
+
+const column = z.union([whole(1, 16_384), label()], { error: 'a column number counted from 1, or a column name' });
+const unit = z.enum(METER_UNITS);
+
+/** What a person says about a meter file. */
+export const meterMapSchema = z
+  .strictObject({
+    format: label(40).optional(),
+    separator: z.enum([',', ';', '\t', '|']).optional(),
+    decimal: z.enum(['.', ',']).optional(),
+    headerRow: whole(0, 1000).optional(),
+    columns: z.partialRecord(z.enum(METER_COLUMNS), column).optional(),
+    units: z
+      .strictObject({
+        active: unit.optional(),
+        exported: unit.optional(),
+        reactive: unit.optional(),
+        lagging: unit.optional(),
+        leading: unit.optional(),
+        voltage: unit.optional(),
+        connected: unit.optional(),
+      })
+      .optional(),
+    quantity: z.enum(['power', 'energy']).optional(),
+    sign: z.enum(['laggingPositive', 'leadingPositive']).optional(),
+    stamp: z.enum(['begin', 'end']).optional(),
+    dateOrder: z.enum(['ymd', 'dmy', 'mdy']).optional(),
+    timeZone: z.string().refine(isTimeZone, { error: 'a time zone such as "Europe/Dublin" or "+10:00"' }).optional(),
+    repair: z.enum(['none', 'hold', 'interpolate', 'typicalDay']).optional(),
+    upToS: quantity('upToS', { min: 0 }).optional(),
+    keepRow: z.enum(['first', 'last']).optional(),
+  })
+  .meta({ id: 'MeterMap' });
+
+/**
+ * A map file as a map.
+ * @param json what JSON.parse gave
+ * @returns the map
+ * @throws InputProblem with every problem and its path
+ */
+export function readMeterMap(json: unknown): MeterMap {
+  return readBySchema(meterMapSchema, json);
+}

@@ -1,0 +1,160 @@
+import * as z from 'zod';
+import { SPECTRUM_NAMES } from '#libs/engine/index.js';
+import { catalogueSchema } from './catalogue-schema.js';
+import { financeSchema } from './finance-schema.js';
+import { pricesSchema } from './prices-schema.js';
+import {
+  currency,
+  label,
+  listOf,
+  localDay,
+  NOT_NEGATIVE,
+  POSITIVE,
+  POWER_FACTOR,
+  type ProblemParams,
+  plain,
+  quantity,
+  type Range,
+  reactorPct,
+  whole,
+} from './schema-parts.js';
+import { siteRules } from './site-rules.js';
+import { tariffSchema } from './tariff-schema.js';
+import { isTimeZone } from './time-zone.js';
+
+const PERCENT: Range = { min: 0, max: 100 };
+const DELAY: Range = { min: 0, max: 31_536_000 };
+
+const bus = z.strictObject({
+  nominalV: quantity('nominalV', { above: 0, min: 1, max: 1e6 }),
+  highestV: quantity('highestV', { above: 0, min: 1, max: 1e6 }).optional(),
+});
+
+const recordedBank = z.discriminatedUnion('state', [
+  z.strictObject({ state: z.literal('none') }),
+  z.strictObject({ state: z.literal('out') }),
+  z.strictObject({ state: z.literal('fixed'), kvar: quantity('kvar', NOT_NEGATIVE) }),
+  z.strictObject({ state: z.literal('logged') }),
+  z.strictObject({ state: z.literal('switching') }),
+  z.strictObject({ state: z.literal('unknown') }),
+]);
+
+const control = z.strictObject({
+  setPointPowerFactor: plain(POWER_FACTOR).optional(),
+  mode: z.enum(['nearestLevel', 'oneByOne']).optional(),
+  responseRatio: plain({ above: 0, max: 1 }).optional(),
+  stepDelayS: quantity('stepDelayS', DELAY).optional(),
+  reconnectDelayS: quantity('reconnectDelayS', DELAY).optional(),
+  wear: z.enum(['even', 'inOrder']).optional(),
+});
+
+const transformer = z.strictObject({
+  ratedKva: quantity('ratedKva', POSITIVE),
+  impedancePct: quantity('impedancePct', { above: 0, below: 100 }),
+  impedanceTolerancePct: quantity('impedanceTolerancePct', { min: 0, max: 50 }).optional(),
+  loadLossKw: quantity('loadLossKw', NOT_NEGATIVE).optional(),
+  noLoadLossKw: quantity('noLoadLossKw', NOT_NEGATIVE).optional(),
+  noLoadCurrentPct: quantity('noLoadCurrentPct', PERCENT).optional(),
+});
+
+const supply = z.strictObject({
+  faultLevelMva: z.strictObject({
+    max: quantity('faultLevelMva', POSITIVE),
+    min: quantity('faultLevelMva', POSITIVE).optional(),
+  }),
+  rOverX: plain({ min: 0, max: 100 }).optional(),
+  resistanceExponent: plain({ min: 0, max: 2 }).optional(),
+  rippleHz: quantity('rippleHz', POSITIVE).nullable().optional(),
+  arrangement: z.enum(['parallel', 'separate']).optional(),
+  transformers: listOf(transformer, 0, 20).optional(),
+});
+
+const order = (pct: Range) => z.strictObject({ orderH: plain({ above: 1, max: 50 }), pct: quantity('pct', pct) });
+
+const loads = z.strictObject({
+  motorSharePct: quantity('motorSharePct', PERCENT).optional(),
+  distorting: listOf(
+    z.strictObject({
+      name: label(),
+      fundamentalA: quantity('fundamentalA', NOT_NEGATIVE),
+      spectrum: z.enum(SPECTRUM_NAMES).optional(),
+      orders: listOf(order({ min: 0, max: 1000 }), 1, 200).optional(),
+    }),
+    0,
+    200,
+  ).optional(),
+  backgroundPct: listOf(order(PERCENT), 0, 200).optional(),
+  dampingKw: z
+    .strictObject({
+      max: quantity('dampingKw', NOT_NEGATIVE).optional(),
+      min: quantity('dampingKw', NOT_NEGATIVE).optional(),
+    })
+    .optional(),
+  summation: z.enum(['exponent', 'arithmetic']).optional(),
+});
+
+const stageGroup = z.strictObject({
+  count: whole(1, 100),
+  ratedKvar: quantity('ratedKvar', POSITIVE),
+  ratedV: quantity('ratedV', POSITIVE),
+  reactorPct: reactorPct().optional(),
+  reactorQuality: plain(POSITIVE).optional(),
+  dischargeOhm: quantity('dischargeOhm', POSITIVE).optional(),
+  reactorMaxA: quantity('reactorMaxA', POSITIVE).optional(),
+  switchPeakA: quantity('switchPeakA', POSITIVE).optional(),
+  fixed: z.boolean().optional(),
+  capacitanceUf: quantity('capacitanceUf', POSITIVE).optional(),
+  reactorMh: quantity('reactorMh', POSITIVE).optional(),
+});
+
+const bank = z.strictObject({
+  stages: listOf(stageGroup, 1, 24),
+  interStageUh: quantity('interStageUh', NOT_NEGATIVE).optional(),
+  ambientCategory: z.enum(['A', 'B', 'C', 'D']).optional(),
+  switchKind: label().optional(),
+});
+
+/** Rules between fields look at whatever was readable, so that one wrong field doesn't hide another. */
+const rules = z.check<unknown>((payload) => {
+  for (const { path, ...problem } of siteRules(payload.value)) {
+    payload.issues.push({
+      code: 'custom',
+      path,
+      input: payload.value,
+      params: { problem } satisfies ProblemParams,
+    });
+  }
+});
+rules._zod.def.when = () => true;
+
+/** The site file and the HTTP body. */
+export const siteSchema = z
+  .strictObject({
+    name: label(),
+    asOf: localDay().optional(),
+    timeZone: z.string().refine(isTimeZone, { error: 'a time zone such as "Europe/Dublin"' }),
+    currency: currency().optional(),
+    rules: z.enum(['iec', 'ieee']),
+    frequencyHz: quantity('frequencyHz', { min: 10, max: 1000 }),
+    bus,
+    meteredAt: z.enum(['bus', 'primary']).optional(),
+    recordedBank: recordedBank.optional(),
+    target: z
+      .strictObject({
+        powerFactor: plain(POWER_FACTOR).optional(),
+        onExport: z.enum(['importOnly', 'absolute']).optional(),
+      })
+      .optional(),
+    control: control.optional(),
+    supply,
+    loads: loads.optional(),
+    bank: bank.optional(),
+    limits: z.strictObject({ emcClass: z.literal([1, 2, 3]).optional() }).optional(),
+    tariff: tariffSchema.optional(),
+    prices: pricesSchema.optional(),
+    catalogue: catalogueSchema.optional(),
+    finance: financeSchema.optional(),
+    estimate: z.unknown().optional(),
+  })
+  .check(rules)
+  .meta({ id: 'Site' });
