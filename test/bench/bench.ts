@@ -1,0 +1,19 @@
+// How fast the program is on this machine: its two hot loops against the same work in C, and one whole plan.
+import { scanWork } from './bench-scan.js';
+import { simulationWorks } from './bench-simulate.js';
+import { benchPlan } from './bench-plan.js';
+import { compareTwins } from './compare-twins.js';
+import { crowding } from './stopwatch.js';
+
+const MOST_CROWDING = 1.15;
+
+const before = await crowding();
+const met = [...simulationWorks(), scanWork()].map((work) => compareTwins(work)?.met ?? true);
+met.push(benchPlan());
+const crowded = Math.max(before, await crowding());
+const counts = crowded <= MOST_CROWDING;
+console.log(
+  `two threads' spin against one's: ${crowded.toFixed(2)}, at most ${MOST_CROWDING}: ` +
+    (counts ? 'the figures count' : 'the machine was busy, the figures do not count'),
+);
+if (counts && met.includes(false)) process.exitCode = 1;
