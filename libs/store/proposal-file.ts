@@ -1,0 +1,17 @@
+import { Column, Entity, ForeignKey, PrimaryColumn } from 'typeorm';
+import { Col } from './columns.js';
+import { Revision } from './revision.js';
+
+/** The proposal of a revision as it was first made: the same bytes at every download. */
+@Entity('proposal')
+export class ProposalFile {
+  @ForeignKey(() => Revision, { onDelete: 'CASCADE', name: 'proposal_revision_fk' })
+  @PrimaryColumn({ type: 'varchar', length: 36 })
+  revisionId: string;
+
+  @Col('bytes')
+  bytes: Buffer;
+
+  @Column({ type: 'varchar', length: 64 })
+  sha256: string;
+}

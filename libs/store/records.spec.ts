@@ -1,0 +1,104 @@
+import { createLoadRecord, type LoadRecord, type RecordSummary, remark } from '#libs/engine/index.js';
+import { afterEach, beforeEach, describe, expect, it } from 'vitest';
+import { databases, type TestDatabase } from '../../test/support/databases.js';
+import { openStore } from './open-store.js';
+import { RecordColumn } from './record-column.js';
+import { insertRecord, type RecordFacts, readRecord } from './records.js';
+import { insertSite } from './sites.js';
+import type { Store } from './store.js';
+import { StoredRecord } from './stored-record.js';
+import { StoredSite } from './stored-site.js';
+
+const NOW = new Date('2026-01-31T10:20:30.456Z');
+const FACTS: RecordFacts = {
+  id: 'r1',
+  siteId: 's1',
+  hash: 'a'.repeat(64),
+  summary: { maxKw: 0.1 + 0.2 } as RecordSummary,
+  quality: { rows: 3 },
+  fileName: 'year.csv',
+  fileHash: 'b'.repeat(64),
+  fileBytes: 12,
+  createdAt: NOW,
+};
+
+/** Fourteen months of quarter hours with gaps, every optional column, values of many kinds. */
+function awkwardRecord(): LoadRecord {
+  const slots = Array.from({ length: 40_000 }, (_, i) => i).filter((i) => i % 97 !== 5);
+  const at = (f: (slot: number) => number) => Float64Array.from(slots, f);
+  return createLoadRecord({
+    intervalS: 900,
+    beginS: at((slot) => 1_735_689_600 + slot * 900),
+    activeKw: at((slot) => Math.round(4000 * Math.sin(slot / 9)) / 10),
+    laggingKvar: at((slot) => Math.abs(Math.sin(slot)) / 3),
+    leadingKvar: at((slot) => (slot % 50 === 0 ? 1e-300 : 0)),
+    voltageV: at((slot) => 398 + (slot % 7) / 10),
+    connectedKvar: at((slot) => (slot % 4) * 12.5),
+    standby: Uint8Array.from(slots, (slot) => (slot % 1000 < 3 ? 1 : 0)),
+    repaired: 3,
+    duplicates: 2,
+    notes: [remark('zone.assumed', { zone: 'UTC', share: 0.1 + 0.2 }, { unit: 's' })],
+  });
+}
+
+for (const { name, available, create } of databases) {
+  describe.runIf(available)(`a load record on ${name}`, () => {
+    let database: TestDatabase;
+    let store: Store;
+
+    beforeEach(async () => {
+      database = await create();
+      store = await openStore(database.url);
+      await store.write((manager) => insertSite(manager, { id: 's1', name: 'Site', document: {} }, NOW));
+    });
+
+    afterEach(async () => {
+      await store.close();
+      await database.drop();
+    });
+
+    it('comes back to the bit, over a restart', async () => {
+      const record = awkwardRecord();
+      await store.write((manager) => insertRecord(manager, FACTS, record));
+      await store.close();
+      store = await openStore(database.url);
+      const back = await store.read((manager) => readRecord(manager, 'r1'));
+      expect(back).toStrictEqual(record);
+      const stored = await store.read((manager) => manager.findOneByOrFail(StoredRecord, { id: 'r1' }));
+      expect(stored).toMatchObject(FACTS);
+      expect(stored.createdAt.getTime()).toBe(NOW.getTime());
+    });
+
+    it('is stored a month and a quantity a row', async () => {
+      await store.write((manager) => insertRecord(manager, FACTS, awkwardRecord()));
+      expect(await store.read((manager) => manager.count(RecordColumn))).toBe(7 * 14);
+    });
+
+    it('leaves nothing behind when its import fails half way', async () => {
+      const record = awkwardRecord();
+      const failing = store.write(async (manager) => {
+        await insertRecord(manager, FACTS, record);
+        throw new Error('the disk is full');
+      });
+      await expect(failing).rejects.toThrow('the disk is full');
+      expect(await store.read((manager) => manager.count(StoredRecord))).toBe(0);
+      expect(await store.read((manager) => manager.count(RecordColumn))).toBe(0);
+    });
+
+    it('goes with its site', async () => {
+      await store.write((manager) => insertRecord(manager, FACTS, awkwardRecord()));
+      await store.write((manager) => manager.delete(StoredSite, { id: 's1' }));
+      expect(await store.read((manager) => manager.count(RecordColumn))).toBe(0);
+    });
+
+    it('that was damaged in the database is refused rather than read', async () => {
+      await store.write((manager) => insertRecord(manager, FACTS, awkwardRecord()));
+      await store.write((manager) => manager.delete(RecordColumn, { month: '2025-03', quantity: 'activeKw' }));
+      await expect(store.read((manager) => readRecord(manager, 'r1'))).rejects.toThrow(/activeKw holds \d+ values/);
+    });
+
+    it('of no known id is null', async () => {
+      expect(await store.read((manager) => readRecord(manager, 'none'))).toBeNull();
+    });
+  });
+}

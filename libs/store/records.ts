@@ -1,0 +1,119 @@
+import { type LoadRecord, createLoadRecord, monthIndex, UTC_TABLE } from '#libs/engine/index.js';
+import type { EntityManager } from 'typeorm';
+import { type PackedColumn, packColumn, unpackColumn } from './packed-column.js';
+import { RecordColumn } from './record-column.js';
+import { StoredRecord } from './stored-record.js';
+
+/** What is kept beside a record's own columns. */
+export type RecordFacts = Pick<
+  StoredRecord,
+  'id' | 'siteId' | 'hash' | 'summary' | 'quality' | 'fileName' | 'fileHash' | 'fileBytes' | 'createdAt'
+>;
+
+/** One quantity over one UTC month, ready to be stored. */
+export interface MonthColumn extends PackedColumn {
+  month: string;
+  quantity: string;
+}
+
+const REQUIRED = ['beginS', 'activeKw', 'laggingKvar', 'leadingKvar'] as const;
+const OPTIONAL = ['voltageV', 'connectedKvar'] as const;
+
+/**
+ * Packs a record's columns by UTC month; no database is needed, so that another thread can do it.
+ * @param record the record
+ */
+export function packRecord(record: LoadRecord): MonthColumn[] {
+  const { names, ofInterval } = monthIndex(record.beginS, UTC_TABLE);
+  const columns = Object.entries(columnsOf(record));
+  return names.flatMap((month, index) => {
+    const from = ofInterval.indexOf(index);
+    const to = ofInterval.lastIndexOf(index) + 1;
+    return columns.map(([quantity, values]) => ({ month, quantity, ...packColumn(values.subarray(from, to)) }));
+  });
+}
+
+function columnsOf(record: LoadRecord): Record<string, Float64Array> {
+  const columns: Record<string, Float64Array> = {};
+  for (const name of REQUIRED) columns[name] = record[name];
+  for (const name of OPTIONAL) {
+    const values = record[name];
+    if (values !== null) columns[name] = values;
+  }
+  if (record.standby !== null) columns.standby = Float64Array.from(record.standby);
+  return columns;
+}
+
+/**
+ * Stores a record with its columns; call it inside one write.
+ * @param manager the write's manager
+ * @param facts what is kept beside the columns
+ * @param record the record
+ * @param columns its packed columns
+ */
+export async function insertRecord(
+  manager: EntityManager,
+  facts: RecordFacts,
+  record: LoadRecord,
+  columns: MonthColumn[] = packRecord(record),
+): Promise<void> {
+  await manager.insert(StoredRecord, {
+    ...facts,
+    intervalS: record.intervalS,
+    firstS: record.firstS,
+    endS: record.endS,
+    intervalCount: record.beginS.length,
+    repaired: record.repaired,
+    duplicates: record.duplicates,
+    notes: [...record.notes],
+  });
+  for (const column of columns) {
+    await manager.insert(RecordColumn, { recordId: facts.id, ...column, bytes: Buffer.from(column.bytes) });
+  }
+}
+
+/**
+ * The record as it was stored, to the bit.
+ * @returns null where there is none of this id
+ */
+export async function readRecord(manager: EntityManager, id: string): Promise<LoadRecord | null> {
+  const stored = await manager.findOneBy(StoredRecord, { id });
+  if (stored === null) return null;
+  const rows = await manager.find(RecordColumn, { where: { recordId: id }, order: { month: 'ASC' } });
+  const columns = new Map<string, Float64Array>();
+  for (const quantity of new Set(rows.map((row) => row.quantity))) {
+    const months = rows.filter((row) => row.quantity === quantity);
+    columns.set(quantity, joined(months, stored.intervalCount, quantity));
+  }
+  const column = (name: (typeof REQUIRED)[number]) => {
+    const values = columns.get(name);
+    if (values === undefined) throw new Error(`record ${id} has no column ${name}`);
+    return values;
+  };
+  const standby = columns.get('standby');
+  return createLoadRecord({
+    intervalS: stored.intervalS,
+    beginS: column('beginS'),
+    activeKw: column('activeKw'),
+    laggingKvar: column('laggingKvar'),
+    leadingKvar: column('leadingKvar'),
+    voltageV: columns.get('voltageV') ?? null,
+    connectedKvar: columns.get('connectedKvar') ?? null,
+    standby: standby === undefined ? null : Uint8Array.from(standby),
+    repaired: stored.repaired,
+    duplicates: stored.duplicates,
+    notes: stored.notes,
+  });
+}
+
+function joined(months: RecordColumn[], intervals: number, quantity: string): Float64Array {
+  const values = new Float64Array(intervals);
+  let at = 0;
+  for (const month of months) {
+    if (at + month.intervals > intervals) throw new Error(`column ${quantity} holds more than ${intervals} values`);
+    values.set(unpackColumn(month), at);
+    at += month.intervals;
+  }
+  if (at !== intervals) throw new Error(`column ${quantity} holds ${at} values, not ${intervals}`);
+  return values;
+}

@@ -1,0 +1,81 @@
+import type { Verdict } from '#libs/engine/index.js';
+import { Column, Entity, ForeignKey, Index, PrimaryColumn } from 'typeorm';
+import { Col } from './columns.js';
+import { StoredRecord } from './stored-record.js';
+import { StoredSite } from './stored-site.js';
+
+/** What is shown of the same kvar built the other way. */
+export interface RivalSummary {
+  verdict: Verdict;
+  /** nameplate kvar of each stage, groups expanded [kvar] */
+  ratedKvar: number[];
+  /** largest reactor ratio of its stages [%], 0 = plain */
+  reactorPct: number;
+  /** levels above 0 at which a limit is exceeded in some corner */
+  levelsOver: number;
+  levelsAll: number;
+}
+
+/**
+ * A plan or an assessment with its frozen inputs: written once, never changed.
+ * Equal inputs of one site are one revision, which makes a job that runs twice harmless.
+ */
+@Entity('revision')
+@Index('revision_number', ['siteId', 'revision'], { unique: true })
+@Index('revision_content', ['siteId', 'contentHash'], { unique: true })
+export class Revision {
+  @PrimaryColumn({ type: 'varchar', length: 36 })
+  id: string;
+
+  @ForeignKey(() => StoredSite, { onDelete: 'CASCADE', name: 'revision_site_fk' })
+  @Column({ type: 'varchar', length: 36 })
+  siteId: string;
+
+  /** number printed on the proposal */
+  @Column({ type: 'varchar', length: 32 })
+  number: string;
+
+  /** counts a site's plans and assessments from 1 */
+  @Column({ type: 'integer' })
+  revision: number;
+
+  @Column({ type: 'varchar', length: 16 })
+  kind: 'plan' | 'assess';
+
+  @Index('revision_record')
+  @ForeignKey(() => StoredRecord, { name: 'revision_record_fk' })
+  @Column({ type: 'varchar', length: 36 })
+  recordId: string;
+
+  @Column({ type: 'varchar', length: 64 })
+  recordHash: string;
+
+  /** canonical JSON of site, zone table, record hash, kind and engine version: the text the content hash is made from */
+  @Column({ type: 'text' })
+  inputs: string;
+
+  @Column({ type: 'varchar', length: 32 })
+  engineVersion: string;
+
+  @Column({ type: 'varchar', length: 64 })
+  contentHash: string;
+
+  /** the result as JSON, put in words */
+  @Column({ type: 'text' })
+  result: string;
+
+  @Col('json', { nullable: true })
+  rival: RivalSummary | null;
+
+  @Column({ type: 'varchar', length: 16 })
+  verdict: Verdict;
+
+  @Col('instant')
+  createdAt: Date;
+
+  @Column({ type: 'varchar', length: 200, nullable: true })
+  author: string | null;
+
+  @Column({ type: 'varchar', length: 2000, nullable: true })
+  reason: string | null;
+}

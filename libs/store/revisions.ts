@@ -1,0 +1,29 @@
+import type { EntityManager } from 'typeorm';
+import { ProposalFile } from './proposal-file.js';
+import { Revision } from './revision.js';
+import { StoredSite } from './stored-site.js';
+
+/** A revision that has not got its number yet, and the proposal made for that number. */
+export interface NewRevision {
+  revision: Revision;
+  proposal: Omit<ProposalFile, 'revisionId'>;
+}
+
+/**
+ * Adds a revision under the number its proposal was made for, if that number is still the next one.
+ * Equal inputs of one site are one revision: where it stands already, it is left as it is.
+ * @param manager the write's manager
+ * @param added the revision, numbered one above the site's last, and its proposal
+ * @returns the revision that stands; null where the number was taken meanwhile or the site is gone
+ */
+export async function insertRevision(manager: EntityManager, added: NewRevision): Promise<Revision | null> {
+  const { siteId, contentHash, revision: number } = added.revision;
+  const standing = await manager.findOneBy(Revision, { siteId, contentHash });
+  if (standing !== null) return standing;
+  const next = { id: siteId, lastRevision: number - 1 };
+  const { affected } = await manager.update(StoredSite, next, { lastRevision: number });
+  if (affected !== 1) return null;
+  await manager.insert(Revision, added.revision);
+  await manager.insert(ProposalFile, { revisionId: added.revision.id, ...added.proposal });
+  return added.revision;
+}

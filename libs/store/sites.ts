@@ -1,0 +1,77 @@
+import { InputProblem } from '#libs/engine/index.js';
+import type { EntityManager } from 'typeorm';
+import { StoredSite } from './stored-site.js';
+
+/** A site that is not there. */
+export function noSite(id: string): InputProblem {
+  return new InputProblem([{ code: 'not-found', expected: 'a site that exists', found: id }]);
+}
+
+/**
+ * Adds a site under the next number of this installation; call it inside a write.
+ * @param manager the write's manager
+ * @param site id, name and document
+ * @param now moment of creation
+ */
+export async function insertSite(
+  manager: EntityManager,
+  site: Pick<StoredSite, 'id' | 'name' | 'document'>,
+  now: Date,
+): Promise<StoredSite> {
+  const { last } = (await manager
+    .createQueryBuilder(StoredSite, 'site')
+    .select('MAX(site.number)', 'last')
+    .getRawOne<{ last: number | null }>()) ?? { last: null };
+  const row: StoredSite = {
+    ...site,
+    number: (last ?? 0) + 1,
+    version: 1,
+    lastRevision: 0,
+    createdAt: now,
+    updatedAt: now,
+  };
+  await manager.insert(StoredSite, row);
+  return row;
+}
+
+/**
+ * Replaces a site's document if it still has the version the client saw: one compare-and-swap.
+ * @param manager the write's manager
+ * @param site id, name and document
+ * @param seen version the client saw
+ * @param now moment of the change
+ * @returns the new version
+ * @throws InputProblem `not-found`, or `stale` where somebody else was first
+ */
+export async function replaceSite(
+  manager: EntityManager,
+  site: Pick<StoredSite, 'id' | 'name' | 'document'>,
+  seen: number,
+  now: Date,
+): Promise<number> {
+  const { affected } = await manager.update(
+    StoredSite,
+    { id: site.id, version: seen },
+    { name: site.name, document: site.document, version: seen + 1, updatedAt: now },
+  );
+  if (affected === 1) return seen + 1;
+  const current = await manager.findOneBy(StoredSite, { id: site.id });
+  if (current === null) throw noSite(site.id);
+  throw new InputProblem([{ code: 'stale', expected: `version ${current.version}`, found: `version ${seen}` }]);
+}
+
+/**
+ * Removes a site with its records, revisions, proposals and jobs.
+ * @param manager the write's manager
+ * @param id the site
+ * @param seen version the client saw, null where it does not say
+ * @throws InputProblem `not-found` or `stale`
+ */
+export async function deleteSite(manager: EntityManager, id: string, seen: number | null): Promise<void> {
+  const current = await manager.findOneBy(StoredSite, { id });
+  if (current === null) throw noSite(id);
+  if (seen !== null && current.version !== seen) {
+    throw new InputProblem([{ code: 'stale', expected: `version ${current.version}`, found: `version ${seen}` }]);
+  }
+  await manager.delete(StoredSite, { id });
+}
