@@ -32,17 +32,19 @@ describe('a packed column', () => {
     );
   });
 
-  it.each([
+  const cases: [number[], number | null, string][] = [
     [[412.5], 10, 'one value has no difference'],
     [[0.1, 0.2, 0.30000000000000004], null, 'the third is not the double nearest to 0.3'],
     [[0, -0], null, 'an integer has no negative zero'],
     [[-2_147_483_648, 2_147_483_648], null, 'their difference does not fit 32 bits'],
-    [[9_007_199_254_740_993], null, 'beyond the integers a double holds all of'],
+    [[9_007_199_254_740_992], null, 'beyond the integers a double holds all of'],
     [[1.5e300, 2], null, 'no integer of 53 bits'],
     [[12.345678, 0.000001], 1_000_000, 'six decimals'],
     [[1 / 3], null, 'no decimal fraction'],
     [[4_102_444_800, 4_102_445_700], 1, 'times after 2038 begin beyond 32 bits, but their differences fit'],
-  ])('stores %j at scale %s, because %s', (values, scale) => {
+  ];
+
+  it.each(cases)('stores %j at scale %s, because %s', (values, scale) => {
     const column = Float64Array.from(values);
     const packed = packColumn(column);
     expect(packed.scale).toBe(scale);
