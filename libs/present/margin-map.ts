@@ -1,0 +1,48 @@
+import type { MarginMap } from '#libs/engine/index.js';
+import type { CellFill, Chart, Mark } from './chart.js';
+import { formatNumber, formatShare } from './format-number.js';
+
+/** Shares of the limit at which a cell's fill changes [%]; over a limit only beyond rounding. */
+const QUIET_FROM_PCT = 50;
+const HATCH_FROM_PCT = 80;
+const SOLID_FROM_PCT = 100 * (1 + 1e-9);
+
+/**
+ * Harmonic voltage of every level and order as a share of its own limit, worst over every corner: a table that can be
+ * seen from across the room.
+ * @param margins shares by level and order
+ * @param name what the bank is, for example "7 % reactors"
+ * @returns chart made of cells; the greatest level on top
+ */
+export function marginMap(margins: MarginMap, name: string): Chart {
+  const levels = margins.levelsKvar.map((kvar, at) => ({ kvar, shares: margins.sharePct[at]! })).reverse();
+  const over = levels.filter(({ kvar, shares }) => kvar > 0 && shares.some((share) => share > SOLID_FROM_PCT)).length;
+  const heads = margins.ordersH.map((order) => formatNumber(order, 'given'));
+  const rows = levels.map(({ kvar, shares }) => [formatNumber(kvar), ...shares.map(formatShare)]);
+  const axis = { label: '', unit: '', scale: 'linear' as const, from: 0 };
+  return {
+    id: 'marginMap',
+    finding:
+      over === 0
+        ? `${name}: every level within its limits`
+        : `${name}: ${over} of ${levels.length - 1} levels over a limit`,
+    caption: 'Harmonic voltage, % of its limit, worst corner; rows are levels in kvar, columns orders.',
+    sentence: `Harmonic voltage as a share of its limit for ${levels.length} levels and ${heads.length} orders; the table holds every number.`,
+    x: { ...axis, to: heads.length, ticks: heads.map((text, at) => ({ at: at + 0.5, text })) },
+    y: { ...axis, unit: 'kvar', to: rows.length, ticks: rows.map((row, at) => ({ at: at + 0.5, text: row[0]! })) },
+    equalScales: false,
+    series: [],
+    marks: levels.flatMap(({ shares }, row) => shares.map((share, column) => cell(share, { row, column }))),
+    table: { columns: ['kvar', ...heads].map((head) => ({ head, right: true })), rows },
+  };
+}
+
+function cell(sharePct: number, at: { row: number; column: number }): Mark {
+  return { kind: 'cell', ...at, text: formatShare(sharePct), fill: fillOf(sharePct) };
+}
+
+function fillOf(sharePct: number): CellFill {
+  if (sharePct > SOLID_FROM_PCT) return 'solid';
+  if (sharePct > HATCH_FROM_PCT) return 'hatch';
+  return sharePct > QUIET_FROM_PCT ? 'quiet' : 'blank';
+}

@@ -1,0 +1,115 @@
+import type { Outcome } from '#libs/engine/index.js';
+import type { Chart, Mark } from './chart.js';
+import { formatNumber, formatQuantity, MINUS } from './format-number.js';
+import { formatMoment } from './local-stamp.js';
+import { linearAxis } from './ticks.js';
+
+/** One interval at the bus, before and after the bank. */
+interface Moment {
+  beginS: number;
+  kw: number;
+  loadKvar: number;
+  bankKvar: number;
+}
+
+/**
+ * Currents of one interval against the voltage, drawn to the right: the load's lags, downwards; the capacitors' leads
+ * by 90°, upwards; their sum is what the supply carries.
+ * @param outcome the plan or judgement
+ * @returns chart with one scale for both directions, in ampere at nominal voltage
+ */
+export function phasors(outcome: Outcome): Chart {
+  const moment = worstMoment(outcome);
+  const perKva = 1000 / (Math.sqrt(3) * outcome.site.nominalV);
+  const load: [number, number] = [moment.kw * perKva, -moment.loadKvar * perKva];
+  const sum: [number, number] = [load[0], load[1] + moment.bankKvar * perKva];
+  const stamp = formatMoment(outcome.zone, moment.beginS);
+  const before = Math.hypot(...load);
+  const after = Math.hypot(...sum);
+  const amperes = (value: number) => formatQuantity(value, 'A');
+  const reach = { x: Math.max(before, after, 1), down: Math.min(load[1], sum[1], 0), up: Math.max(load[1], sum[1], 0) };
+  return {
+    id: 'phasors',
+    finding:
+      moment.bankKvar > 0
+        ? `The supply’s current falls from ${amperes(before)} to ${amperes(after)}`
+        : 'No stage is connected at this moment',
+    caption: `Currents at ${formatNumber(outcome.site.nominalV, 'given')} V in the interval from ${stamp}; voltage to the right, lagging downwards.`,
+    sentence:
+      `Voltage U points right. The load’s current, ${amperes(before)}, ${angleWords(load)}. ` +
+      `The capacitors’ current, ${amperes(moment.bankKvar * perKva)}, leads U by 90° and points up. ` +
+      `Their sum, the supply’s current, is ${amperes(after)} and ${angleWords(sum)}.`,
+    x: linearAxis('in phase', 'A', { least: 0, most: reach.x * 1.05 }, 4),
+    y: linearAxis('lagging downwards', 'A', { least: reach.down, most: reach.up }, 4),
+    equalScales: true,
+    series: [],
+    marks: arrows(load, sum, moment.bankKvar * perKva),
+    table: phasorTable(moment, { load, sum }),
+  };
+}
+
+/** The worst interval, or the one of greatest need where none misses the target. */
+function worstMoment(outcome: Outcome): Moment {
+  const { series, result } = outcome;
+  const worst = result.operation.worstIntervals[0];
+  let at = worst === undefined ? 0 : series.beginS.findIndex((s) => s === worst.beginS);
+  if (worst === undefined) {
+    for (let i = 1; i < series.needKvar.length; i++) if (series.needKvar[i]! > series.needKvar[at]!) at = i;
+  }
+  return {
+    beginS: series.beginS[at]!,
+    kw: series.busKw[at]!,
+    loadKvar: series.busKvar[at]!,
+    bankKvar: series.connectedKvar[at]!,
+  };
+}
+
+function angleWords([x, y]: [number, number]): string {
+  const degrees = (Math.atan2(y, x) * 180) / Math.PI;
+  if (Math.abs(degrees) < 0.05) return 'is in phase with U';
+  const size = formatNumber(Math.abs(degrees));
+  return degrees < 0 ? `lags U, at ${MINUS}${size}°` : `leads U, at ${size}°`;
+}
+
+function arrows(load: [number, number], sum: [number, number], bankA: number): Mark[] {
+  const label = (name: string, [x, y]: [number, number], amperes: number) => ({
+    name: `${name} ${formatQuantity(amperes, 'A')}`,
+    x,
+    y,
+  });
+  const ends = {
+    load: label('load', load, Math.hypot(...load)),
+    bank: label('bank', [load[0], (load[1] + sum[1]) / 2], bankA),
+    sum: label('supply', sum, Math.hypot(...sum)),
+  };
+  const marks: Mark[] = [{ kind: 'arrow', from: [0, 0], to: load, part: 'site' }];
+  if (bankA > 0) {
+    marks.push({ kind: 'arrow', from: load, to: sum, part: 'bank' });
+    marks.push({ kind: 'label', x: ends.bank.x, y: ends.bank.y, text: ends.bank.name, side: 'right', part: 'bank' });
+    marks.push({ kind: 'arrow', from: [0, 0], to: sum, part: 'after' });
+    marks.push({ kind: 'label', x: sum[0], y: sum[1], text: ends.sum.name, side: 'right', part: 'after' });
+  }
+  marks.push({ kind: 'label', x: load[0], y: load[1], text: ends.load.name, side: 'below', part: 'site' });
+  return marks;
+}
+
+function phasorTable(moment: Moment, ends: { load: [number, number]; sum: [number, number] }): Chart['table'] {
+  const row = (name: string, kw: number, kvar: number, amperes: number) => [
+    name,
+    formatNumber(kw),
+    formatNumber(kvar),
+    formatNumber(Math.hypot(kw, kvar)),
+    formatNumber(amperes),
+    Math.hypot(kw, kvar) > 0 ? formatNumber(Math.abs(kw) / Math.hypot(kw, kvar)) : '–',
+  ];
+  const { kw, loadKvar, bankKvar } = moment;
+  const bankA = ends.sum[1] - ends.load[1];
+  return {
+    columns: ['', 'kW', 'kvar, lagging', 'kVA', 'A', 'cos φ'].map((head, at) => ({ head, right: at > 0 })),
+    rows: [
+      row('load', kw, loadKvar, Math.hypot(...ends.load)),
+      row('bank', 0, -bankKvar, bankA),
+      row('supply', kw, loadKvar - bankKvar, Math.hypot(...ends.sum)),
+    ],
+  };
+}

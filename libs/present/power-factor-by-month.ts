@@ -1,0 +1,86 @@
+import type { Outcome } from '#libs/engine/index.js';
+import type { Chart, Mark } from './chart.js';
+import { formatNumber } from './format-number.js';
+import { formatMonth, monthLetters } from './local-stamp.js';
+import { niceStep } from './ticks.js';
+
+interface MonthPair {
+  month: string;
+  before: number | null;
+  after: number | null;
+}
+
+/**
+ * Each billing month's energy power factor before (ring) and after (disc), joined: change is length.
+ * @param outcome the plan or judgement
+ * @returns chart with the target as a dotted line; a month without energy has no mark
+ */
+export function powerFactorByMonth(outcome: Outcome): Chart {
+  const months = monthPairs(outcome);
+  const target = outcome.site.targetPowerFactor;
+  const known = months.flatMap(({ before, after }) => [before, after]).filter((value) => value !== null);
+  return {
+    id: 'powerFactorByMonth',
+    finding: finding(months, target),
+    caption: `Energy power factor at the meter, lagging kvarh only. Ring: before. Disc: after. Dotted: target ${formatNumber(target, 'given')}.`,
+    sentence: months
+      .map(({ month, before, after }) => `${formatMonth(month)}: ${number(before)} before, ${number(after)} after.`)
+      .join(' '),
+    x: {
+      label: '',
+      unit: '',
+      scale: 'linear',
+      from: -0.5,
+      to: months.length - 0.5,
+      ticks: months.map(({ month }, at) => ({ at, text: monthLetters(month) })),
+    },
+    y: factorAxis(Math.min(...known, target)),
+    equalScales: false,
+    series: [{ part: 'limit', shape: 'line', x: [-0.5, months.length - 0.5], y: [target, target] }],
+    marks: months.flatMap(monthMarks),
+    table: {
+      columns: ['month', 'before', 'after'].map((head, at) => ({ head, right: at > 0 })),
+      rows: months.map(({ month, before, after }) => [formatMonth(month), number(before), number(after)]),
+    },
+  };
+}
+
+function monthPairs(outcome: Outcome): MonthPair[] {
+  const after = new Map(outcome.result.operation.months.map((month) => [month.month, month.powerFactorLagging]));
+  return outcome.result.requirement.months.map(({ month, powerFactorLagging }) => ({
+    month,
+    before: powerFactorLagging,
+    after: after.get(month) ?? null,
+  }));
+}
+
+function number(value: number | null): string {
+  return value === null ? '–' : formatNumber(value);
+}
+
+function factorAxis(least: number): Chart['y'] {
+  const step = niceStep(Math.min(least, 0.98), 1, 4);
+  const from = Math.max(0, Math.floor(least / step - 0.05) * step);
+  const ticks = [];
+  for (let n = Math.round(from / step); n * step <= 1 + 1e-9; n++) {
+    ticks.push({ at: n * step, text: (n * step).toFixed(2) });
+  }
+  return { label: 'power factor', unit: '', scale: 'linear', from, to: 1, ticks };
+}
+
+function monthMarks({ before, after }: MonthPair, at: number): Mark[] {
+  const marks: Mark[] = [];
+  if (before !== null && after !== null) marks.push({ kind: 'join', x: at, from: before, to: after });
+  if (before !== null) marks.push({ kind: 'ring', x: at, y: before });
+  if (after !== null) marks.push({ kind: 'disc', x: at, y: after });
+  return marks;
+}
+
+function finding(months: readonly MonthPair[], target: number): string {
+  const text = formatNumber(target, 'given');
+  const missed = months.filter(({ after }) => after !== null && after < target - 1e-9);
+  if (missed.length === 0) return `Every month reaches ${text}`;
+  const worst = missed.reduce((low, month) => (month.after! < low.after! ? month : low));
+  const count = missed.length === 1 ? 'One month stays' : `${missed.length} months stay`;
+  return `${count} under ${text}, ${formatMonth(worst.month)} by most`;
+}

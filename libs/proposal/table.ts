@@ -1,0 +1,157 @@
+import { HAIR, INK, STROKE } from './ink.js';
+import { LABEL, leading, type Paper, rise } from './paper.js';
+import { BODY, type Line, type Piece, type Style } from './typesetter.js';
+
+/** A column: its heading, its share of the width, and how its cells stand. */
+export interface Column {
+  head: string;
+  share: number;
+  align?: 'left' | 'right';
+}
+
+/** A cell: text, or text beside something drawn. */
+export type Cell = string | readonly Piece[] | DrawnCell;
+
+/** A cell with a drawing at its left edge. */
+export interface DrawnCell {
+  pieces: readonly Piece[];
+  /** width kept for the drawing [pt] */
+  inset: number;
+  /** @param box cell's left, top and height of its first line [pt] */
+  draw(box: { x: number; y: number; width: number; height: number }): void;
+}
+
+export interface TableSetting {
+  style?: Style;
+  /** left edge and width, else the whole page's */
+  x?: number;
+  width?: number;
+  /** above and below the text of a row [pt] */
+  padding?: number;
+  after?: number;
+}
+
+interface Place {
+  x: number;
+  width: number;
+  right: boolean;
+}
+
+interface SetCell {
+  lines: Line[];
+  inset: number;
+  draw: DrawnCell['draw'] | null;
+}
+
+const GUTTER = 12;
+
+/**
+ * A ruled table: heading row repeated on every page it runs over, cells wrapped, rows kept whole.
+ * @param columns headings, shares of the width
+ * @param rows one cell a column
+ */
+export function drawTable(
+  paper: Paper,
+  columns: readonly Column[],
+  rows: readonly (readonly Cell[])[],
+  setting: TableSetting = {},
+): void {
+  const style = { ...(setting.style ?? BODY), tabular: false };
+  const padding = setting.padding ?? 3.4;
+  const places = placeColumns(paper, columns, setting);
+  const first = setting.x ?? paper.left;
+  const last = first + (setting.width ?? paper.width);
+  const head = columns.map((column, at) => paper.type.wrap([column.head], LABEL, places[at]!.width));
+  const headHeight = Math.max(...head.map((lines) => lines.length)) * leading(LABEL) + 4;
+
+  const drawHead = (tagged: boolean) => {
+    const top = paper.y;
+    const put = (at: number) => drawLines(paper, head[at]!, LABEL, places[at]!, top);
+    if (tagged) {
+      paper.within('TR', () => {
+        for (const at of columns.keys()) paper.tagged('TH', () => put(at), { scope: 'Column' });
+      });
+    } else {
+      paper.artifact(() => {
+        for (const at of columns.keys()) put(at);
+      });
+    }
+    paper.y += headHeight;
+    paper.rule({ from: first, to: last, width: STROKE.load, ink: INK });
+  };
+
+  paper.within('Table', () => {
+    const set = rows.map((row) =>
+      row.map((cell, at) => setCell(paper, cell, cellStyle(style, columns[at]!), places[at]!)),
+    );
+    const heights = set.map((row) => Math.max(...row.map((cell) => cell.lines.length)) * leading(style) + 2 * padding);
+    paper.need(headHeight + (heights[0] ?? 0) + (heights[1] ?? 0));
+    drawHead(true);
+    set.forEach((row, n) => {
+      if (heights[n]! > paper.rest && paper.y > paper.top + headHeight + 1) {
+        paper.turn();
+        drawHead(false);
+      }
+      drawRow(paper, row, { columns, places, style, top: paper.y + padding });
+      paper.y += heights[n]!;
+      paper.rule({ from: first, to: last, width: STROKE.hair, ink: HAIR });
+    });
+  });
+  paper.y += setting.after ?? 8;
+}
+
+function cellStyle(style: Style, column: Column): Style {
+  return column.align === 'right' ? { ...style, tabular: true } : style;
+}
+
+function placeColumns(paper: Paper, columns: readonly Column[], setting: TableSetting): Place[] {
+  const total = columns.reduce((sum, { share }) => sum + share, 0);
+  const free = (setting.width ?? paper.width) - GUTTER * (columns.length - 1);
+  let x = setting.x ?? paper.left;
+  return columns.map(({ share, align }) => {
+    const width = (free * share) / total;
+    const place = { x, width, right: align === 'right' };
+    x += width + GUTTER;
+    return place;
+  });
+}
+
+function setCell(paper: Paper, cell: Cell, style: Style, place: Place): SetCell {
+  if (typeof cell === 'string') return { lines: paper.type.wrap([cell], style, place.width), inset: 0, draw: null };
+  if (!('pieces' in cell)) return { lines: paper.type.wrap(cell, style, place.width), inset: 0, draw: null };
+  const { pieces, inset, draw } = cell;
+  return { lines: paper.type.wrap(pieces, style, place.width - inset), inset, draw };
+}
+
+function drawLines(
+  paper: Paper,
+  lines: readonly Line[],
+  style: Style,
+  place: Place & { inset?: number },
+  top: number,
+): void {
+  lines.forEach((line, n) => {
+    const x = place.right ? place.x + place.width - line.width : place.x + (place.inset ?? 0);
+    paper.type.draw(line, x, top + n * leading(style) + rise(style));
+  });
+}
+
+interface RowSetting {
+  columns: readonly Column[];
+  places: readonly Place[];
+  style: Style;
+  top: number;
+}
+
+function drawRow(paper: Paper, row: readonly SetCell[], { places, style, top }: RowSetting): void {
+  paper.within('TR', () => {
+    row.forEach((cell, at) => {
+      const place = places[at]!;
+      if (cell.draw !== null) {
+        const box = { x: place.x, y: top, width: place.width, height: leading(style) };
+        paper.artifact(() => cell.draw!(box));
+      }
+      paper.tagged('TD', () => drawLines(paper, cell.lines, style, { ...place, inset: cell.inset }, top));
+    });
+  });
+}
