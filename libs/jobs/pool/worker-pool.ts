@@ -1,0 +1,58 @@
+import { availableParallelism } from 'node:os';
+import { fileURLToPath } from 'node:url';
+import { MessageChannel } from 'node:worker_threads';
+import { Piscina } from 'piscina';
+import { valueOf, type WorkerAnswer } from './worker-answer.js';
+
+/** How one task is run. */
+export interface TaskOptions {
+  /** ends the task, and with it the thread it runs in */
+  signal?: AbortSignal;
+  /** @param fraction share of the task that is done, 0 … 1 */
+  report?: (fraction: number) => void;
+}
+
+/**
+ * Threads that run the functions a worker file exports. Each function takes `{ task, port }` and gives a `WorkerAnswer`.
+ */
+export class WorkerPool {
+  readonly #pool: Piscina;
+
+  /**
+   * @param workerFile compiled module
+   * @param threads most threads at a time; absent, one a core but one, two at least
+   */
+  constructor(workerFile: URL, threads: number = Math.max(2, availableParallelism() - 1)) {
+    this.#pool = new Piscina({
+      filename: fileURLToPath(workerFile),
+      minThreads: 1,
+      maxThreads: threads,
+      idleTimeout: 30_000,
+      // A worker is compiled code: it must not take over conditions its parent resolves sources with.
+      execArgv: [],
+    });
+  }
+
+  /**
+   * Runs an exported function in a thread.
+   * @param name of the export
+   * @param task what it is given, copied
+   * @returns what it returns, copied
+   * @throws InputProblem where it throws one, an AbortError where it was ended, else the fault
+   */
+  async run<T>(name: string, task: unknown, { signal, report }: TaskOptions = {}): Promise<T> {
+    const { port1, port2 } = new MessageChannel();
+    port1.on('message', (fraction: number) => report?.(fraction));
+    try {
+      const options = { name, transferList: [port2], ...(signal === undefined ? {} : { signal }) };
+      return valueOf((await this.#pool.run({ task, port: port2 }, options)) as WorkerAnswer<T>);
+    } finally {
+      port1.close();
+    }
+  }
+
+  /** Ends the threads, whatever they do. */
+  async close(): Promise<void> {
+    await this.#pool.destroy();
+  }
+}
