@@ -58,9 +58,11 @@ export function plain(range: Range = {}) {
   return number;
 }
 
-/** A whole number from `min` to `max`. */
+/**
+ * A whole number from `min` to `max`. (The library's own `int` would keep the rules between fields from running.)
+ */
 export function whole(min: number, max: number) {
-  return z.number().int().min(min).max(max);
+  return z.number().multipleOf(1).min(min).max(max).meta({ type: 'integer' });
 }
 
 /** A word or two, without control characters. */
@@ -129,7 +131,11 @@ function quantityValue(value: unknown, unit: string): number | Omit<Problem, 'pa
   if (reading.fault === 'number') {
     return { code: 'wrong-type', expected: `a number with a decimal point and a unit such as ${unit}`, found, unit };
   }
-  return { code: 'wrong-unit', expected: `a unit of the dimension of ${unit}`, found, unit };
+  const wanted =
+    reading.fault === 'no-unit'
+      ? `a unit after the number, such as ${unit}`
+      : `a unit that measures the same as ${unit}`;
+  return { code: 'wrong-unit', expected: wanted, found, unit };
 }
 
 function rangeProblem(value: number, range: Range, unit: string, given: unknown): Omit<Problem, 'path'> | null {

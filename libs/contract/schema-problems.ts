@@ -28,13 +28,19 @@ export function readBySchema<T extends z.ZodType>(schema: T, json: unknown): z.o
  * @returns one problem an issue, unknown keys one each
  */
 export function problemsOf(issues: readonly Issue[], json: unknown): Problem[] {
-  const problems = issues.flatMap((issue) => problemsOfIssue(issue, json));
+  const problems = firstOfEachPlace(issues.flatMap((issue) => problemsOfIssue(issue, json)));
   if (problems.length <= MOST_PROBLEMS) return problems;
   const rest = problems.length - MOST_PROBLEMS;
   return [
     ...problems.slice(0, MOST_PROBLEMS),
     { code: 'too-large', expected: `at most ${MOST_PROBLEMS} problems`, found: `${rest} more` },
   ];
+}
+
+/** One value may break several bounds at once; the first says enough. */
+function firstOfEachPlace(problems: readonly Problem[]): Problem[] {
+  const seen = new Set<string | undefined>();
+  return problems.filter(({ path }) => !seen.has(path) && seen.add(path));
 }
 
 /**
@@ -84,14 +90,13 @@ function codeAndExpectation(issue: Issue, value: unknown): { code: ProblemCode; 
   return { code: isOfWrongType(issue, value) ? 'wrong-type' : 'out-of-range', expected };
 }
 
-/** A fraction where a whole number belongs, or a word that is not on the list, is still of the right type. */
+/** A word that is not on the list is still of the right type. */
 function isOfWrongType(issue: Issue, value: unknown): boolean {
   if (issue.code === 'invalid_value') return typeof value !== typeof issue.values[0];
-  return issue.code === 'invalid_type' && !((issue.expected as string) === 'int' && typeof value === 'number');
+  return issue.code === 'invalid_type';
 }
 
 const TYPES: Record<string, string> = {
-  int: 'a whole number',
   number: 'a number',
   string: 'text',
   boolean: 'true or false',
@@ -113,6 +118,8 @@ function expectation(issue: Issue): string {
       return `${sized(issue.origin)}${issue.inclusive ? 'at least' : 'more than'} ${issue.minimum}`;
     case 'too_big':
       return `${sized(issue.origin)}${issue.inclusive ? 'at most' : 'less than'} ${issue.maximum}`;
+    case 'not_multiple_of':
+      return 'a whole number';
     default:
       return issue.message;
   }

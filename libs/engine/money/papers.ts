@@ -76,12 +76,13 @@ export interface BilledQuantity {
   ratchet?: { pct: number; months: number; of?: number[] };
 }
 
+/** An amount a month. */
 export interface FixedClause extends ClauseCommon {
   kind: 'fixed';
   amountPerMonth: number;
 }
 
-/** One of `pricePerUnit`, `prices`, `blocks`. */
+/** Energy times a price: one of `pricePerUnit`, `prices`, `blocks`. */
 export interface EnergyClause extends ClauseCommon {
   kind: 'energy';
   of?: 'kWh' | 'kVAh';
@@ -92,13 +93,14 @@ export interface EnergyClause extends ClauseCommon {
   blocks?: { upTo: number | null; pricePerUnit: number }[];
 }
 
+/** Energy of each period times a percentage that depends on its power factor. */
 export interface EnergyByFactorClause extends ClauseCommon {
   kind: 'energyByFactor';
   pricePerUnit: number;
   scale: Scale;
 }
 
-/** `freeRatio` and a price, or `tiers`. */
+/** Reactive energy beyond a share of the active: `freeRatio` and a price, or `tiers`. */
 export interface KvarhBeyondRatioClause extends ClauseCommon {
   kind: 'kvarhBeyondRatio';
   freeRatio?: number;
@@ -108,6 +110,7 @@ export interface KvarhBeyondRatioClause extends ClauseCommon {
   byWindow?: boolean;
 }
 
+/** The greatest kvar beyond a share of the greatest kW. */
 export interface KvarBeyondRatioClause extends ClauseCommon, BilledQuantity {
   kind: 'kvarBeyondRatio';
   ratio: number;
@@ -115,7 +118,7 @@ export interface KvarBeyondRatioClause extends ClauseCommon, BilledQuantity {
   pricePerUnit: number;
 }
 
-/** One of `pricePerUnit`, `prices`. */
+/** Greatest demand times a price: one of `pricePerUnit`, `prices`. */
 export interface DemandClause extends ClauseCommon, BilledQuantity {
   kind: 'demand';
   basis: 'kW' | 'kVA' | 'kWOrKvaShare';
@@ -125,6 +128,7 @@ export interface DemandClause extends ClauseCommon, BilledQuantity {
   prices?: Record<string, number>;
 }
 
+/** A percentage of earlier lines that depends on the power factor. */
 export interface PercentClause extends ClauseCommon {
   kind: 'percent';
   scale: Scale;
@@ -132,6 +136,7 @@ export interface PercentClause extends ClauseCommon {
   applies: string[] | 'all';
 }
 
+/** An amount by an expression over monthly quantities. */
 export interface FormulaClause extends ClauseCommon {
   kind: 'formula';
   expression: string;
