@@ -4,7 +4,7 @@ import { InputProblem, type Problem } from '#libs/engine/index.js';
 export type WorkerAnswer<T> = { value: T } | { problems: readonly Problem[] };
 
 /** Runs work and packs what it returns, or the input problem it throws; a fault is left to be thrown. */
-export async function answerOf<T>(work: () => T | Promise<T>): Promise<WorkerAnswer<T>> {
+export async function packAnswer<T>(work: () => T | Promise<T>): Promise<WorkerAnswer<T>> {
   try {
     return { value: await work() };
   } catch (error) {
@@ -17,7 +17,7 @@ export async function answerOf<T>(work: () => T | Promise<T>): Promise<WorkerAns
  * Unpacks an answer.
  * @throws InputProblem where the work threw one
  */
-export function valueOf<T>(answer: WorkerAnswer<T>): T {
+export function unpackAnswer<T>(answer: WorkerAnswer<T>): T {
   if ('problems' in answer) throw new InputProblem(answer.problems);
   return answer.value;
 }

@@ -2,7 +2,7 @@ import { availableParallelism } from 'node:os';
 import { fileURLToPath } from 'node:url';
 import { MessageChannel } from 'node:worker_threads';
 import { Piscina } from 'piscina';
-import { valueOf, type WorkerAnswer } from './worker-answer.js';
+import { unpackAnswer, type WorkerAnswer } from './worker-answer.js';
 
 /** How one task is run. */
 export interface TaskOptions {
@@ -45,7 +45,7 @@ export class WorkerPool {
     port1.on('message', (fraction: number) => report?.(fraction));
     try {
       const options = { name, transferList: [port2], ...(signal === undefined ? {} : { signal }) };
-      return valueOf((await this.#pool.run({ task, port: port2 }, options)) as WorkerAnswer<T>);
+      return unpackAnswer((await this.#pool.run({ task, port: port2 }, options)) as WorkerAnswer<T>);
     } finally {
       port1.close();
     }
