@@ -1,10 +1,12 @@
+import type { MarginMap } from '../duty/margin-map.js';
 import type { Bank } from '../layout/bank.js';
 import type { Loads } from '../network/loads.js';
 import type { LoadRecord } from '../record/load-record.js';
 import type { ZoneTable } from '../record/zone-table.js';
 import type { Supply } from '../supply/supply.js';
 import type { Result } from './result.js';
-import type { RecordedBank, RuleSet } from './site.js';
+import type { RuleSet } from '../duty/rules.js';
+import type { RecordedBank } from './site.js';
 
 /** The site with every default filled in. */
 export interface SettledSite {
@@ -43,16 +45,6 @@ export interface OperationSeries {
   meterLaggingKvar: Float64Array;
   /** after the bank, at the meter [kvar] */
   meterLeadingKvar: Float64Array;
-}
-
-/** Harmonic voltage as a share of its own limit, worst over every corner. */
-export interface MarginMap {
-  /** ascending, 0 included [kvar] */
-  levelsKvar: number[];
-  /** orders with a limit, ascending */
-  ordersH: number[];
-  /** [level][order], % of the limit */
-  sharePct: number[][];
 }
 
 /** The same kvar built the other way (without reactors where the bank has them), for comparison on the same scales. */

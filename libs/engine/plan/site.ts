@@ -1,12 +1,10 @@
 import type { BankInput } from '../layout/bank.js';
 import type { CatalogueInput } from '../layout/catalogue.js';
+import type { RuleSet } from '../duty/rules.js';
 import type { Finance, PriceBook, Tariff } from '../money/papers.js';
 import type { LoadsInput } from '../network/loads.js';
 import type { Control } from '../operation/control.js';
 import type { SupplyInput } from '../supply/supply.js';
-
-/** Which limit tables and which discharge and conductor rules apply. */
-export type RuleSet = 'iec' | 'ieee';
 
 /** Was a bank working while the record was taken. */
 export type RecordedBank =

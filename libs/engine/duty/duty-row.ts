@@ -1,0 +1,99 @@
+import type { Corner } from '../network/corners.js';
+import { WORSE_SHARE } from '../network/network-check.js';
+import { graver, type Verdict } from './rules.js';
+
+/** What a part or the network carries, beside its limit. */
+export interface Duty {
+  name: string;
+  /** entry of `bank.stages`, null for the bank as a whole */
+  group: number | null;
+  value: number;
+  limit: number | null;
+  unit: string;
+  ratio: number | null;
+  levelKvar: number | null;
+  corner: Corner | null;
+  orderH: number | null;
+  source: string;
+  /** null: not judged */
+  verdict: Verdict | null;
+}
+
+/** A ratio above this exceeds its limit. */
+export const EXCEEDED_RATIO = 1 + 1e-9;
+
+/** Share of a limit from which a duty is near it: voltages, and everything else. */
+export const NEAR_RATIO = { voltage: 0.95, other: 0.8 } as const;
+
+/** Where a value was met. */
+export interface Place {
+  levelKvar: number | null;
+  corner: Corner | null;
+  orderH: number | null;
+}
+
+/** What a row is about. */
+export interface DutyHead {
+  name: string;
+  group: number | null;
+  unit: string;
+  source: string;
+  nearRatio: number;
+}
+
+/**
+ * Verdict of one value against one limit, network baseline left out.
+ * @param ratio value/limit
+ * @param nearRatio share from which it is near the limit
+ * @returns clear, watch or avoid
+ * @source method-limits
+ */
+export function ratioVerdict(ratio: number, nearRatio: number): Verdict {
+  if (ratio > EXCEEDED_RATIO) return 'avoid';
+  return ratio > nearRatio ? 'watch' : 'clear';
+}
+
+/** One row of the duties: keeps the largest ratio met and the worst verdict met anywhere. */
+export class DutyRow {
+  readonly head: DutyHead;
+  #worst: { value: number; limit: number | null; ratio: number | null; place: Place } | null = null;
+  #verdict: Verdict | null = null;
+
+  /** @param head name, group, unit, source and threshold of the row */
+  constructor(head: DutyHead) {
+    this.head = head;
+  }
+
+  /**
+   * Takes a value with a limit.
+   * @param value in the row's unit
+   * @param limit in the row's unit, > 0
+   * @param place where it was met
+   * @param judge verdict of a ratio; the row's own threshold where absent
+   */
+  take(value: number, limit: number, place: Place, judge?: (ratio: number) => Verdict): void {
+    const ratio = value / limit;
+    const verdict = judge === undefined ? ratioVerdict(ratio, this.head.nearRatio) : judge(ratio);
+    this.#verdict = this.#verdict === null ? verdict : graver(this.#verdict, verdict);
+    const least = this.#worst === null ? -1 : this.#worst.ratio! * (1 + WORSE_SHARE);
+    if (ratio > least) this.#worst = { value, limit, ratio, place };
+  }
+
+  /**
+   * Takes a value whose limit is unknown: shown, not judged.
+   * @param value in the row's unit
+   * @param place where it was met
+   */
+  takeUnjudged(value: number, place: Place): void {
+    if (this.#worst !== null && value <= this.#worst.value * (1 + WORSE_SHARE)) return;
+    this.#worst = { value, limit: null, ratio: null, place };
+  }
+
+  /** @returns the row, or null where nothing was taken */
+  duty(): Duty | null {
+    if (this.#worst === null) return null;
+    const { value, limit, ratio, place } = this.#worst;
+    const { name, group, unit, source } = this.head;
+    return { name, group, value, limit, unit, ratio, ...place, source, verdict: this.#verdict };
+  }
+}

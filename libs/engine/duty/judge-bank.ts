@@ -1,0 +1,138 @@
+import type { Bank } from '../layout/bank.js';
+import type { Level } from '../layout/levels.js';
+import { bankModel, eachFlow } from '../network/flow.js';
+import type { Loads } from '../network/loads.js';
+import {
+  LevelCollector,
+  type NearPeak,
+  type NetworkSummary,
+  nearestPeak,
+  summarizeNetwork,
+} from '../network/network-check.js';
+import type { NetworkModel } from '../network/network-model.js';
+import { PeakFinder } from '../network/peaks.js';
+import type { Supply } from '../supply/supply.js';
+import { type ChargeStage, chargeStages } from './charge.js';
+import { type Duty, DutyRow, NEAR_RATIO } from './duty-row.js';
+import { type InrushStage, inrushStages } from './inrush.js';
+import { NetworkDuties, networkLimits } from './network-duties.js';
+import { CAPACITOR_RULES, graver, type RuleSet, type Verdict } from './rules.js';
+import { type DutyVoltages, StageDuties } from './stage-duties.js';
+
+/** What a bank is judged by. */
+export interface JudgeBasis {
+  rules: RuleSet;
+  frequencyHz: number;
+  voltages: DutyVoltages;
+  emcClass: 1 | 2 | 3;
+  supply: Supply;
+  loads: Loads;
+  reconnectDelayS: number;
+}
+
+/** The bank judged: network, duties, stored charge, inrush, and what speaks against it. */
+export interface Judgement {
+  network: NetworkSummary;
+  duties: Duty[];
+  charge: ChargeStage[];
+  inrush: InrushStage[];
+  verdict: Verdict;
+  /** the peak that comes nearest to an order present, within reach */
+  nearPeak: NearPeak | null;
+  /** distorting load in % of transformer rating where plain stages meet more than is customary, else null */
+  distortingSharePct: number | null;
+  /** distorting loads or background are unknown */
+  networkUnknown: boolean;
+  /** a limit exceeded without the bank already */
+  exceededAlready: boolean;
+}
+
+/** A peak this near to an order present is a reason to look again [order]. */
+export const PEAK_REACH_H = 0.3;
+/** Plain stages are looked at again where distorting loads pass this share of transformer rating [%]. */
+export const PLAIN_SHARE_PCT = 15;
+
+/**
+ * Judges a bank on a network: every level, every corner.
+ * @param model the network without the bank
+ * @param bank the bank
+ * @param levels its levels, ascending
+ * @param basis rules, voltages, supply, loads, reconnection delay
+ * @returns network, duties and verdict
+ * @source method-limits
+ */
+export function judgeBank(model: NetworkModel, bank: Bank, levels: Level[], basis: JudgeBasis): Judgement {
+  const finder = new PeakFinder(model, bank);
+  const tables = bankModel(model, bank, levels);
+  const collector = new LevelCollector(model);
+  const empty = summarizeNetwork(model, []);
+  const networkUnknown = basis.loads.distorting === null || basis.loads.backgroundPct === null;
+  const limits = networkLimits({ ...basis, ...basis.voltages, ...empty, loadA: model.loadA });
+  const stages = bank.groups.map((_, g) => new StageDuties(model, bank, g, basis));
+  const bankDuties = new NetworkDuties(model, limits, !networkUnknown);
+  eachFlow(model, tables, (flow) => {
+    collector.take(flow);
+    bankDuties.take(flow);
+    for (const stage of stages) stage.take(flow);
+  });
+  const charge = chargeStages(bank, basis.rules, basis.frequencyHz, basis.reconnectDelayS);
+  const inrush = inrushStages(bank, {
+    nominalV: basis.voltages.nominalV,
+    frequencyHz: basis.frequencyHz,
+    shortCircuitMva: empty.shortCircuitMva,
+    rules: basis.rules,
+  });
+  const duties = [
+    ...stages.flatMap((stage, g) => [
+      ...stage.duties(),
+      ...dischargeDuty(bank, charge[g]!, basis.rules),
+      ...inrushDuty(bank, inrush[g]!, basis.rules),
+    ]),
+    ...bankDuties.duties(),
+  ];
+  const nearPeak = nearestPeak(model, tables, finder, PEAK_REACH_H);
+  const distortingSharePct = plainSharePct(bank, basis);
+  const watched = nearPeak !== null || distortingSharePct !== null || (networkUnknown && bank.groups.length > 0);
+  const worst = duties.reduce<Verdict>((verdict, duty) => graver(verdict, duty.verdict), 'clear');
+  return {
+    network: summarizeNetwork(model, collector.levels(finder)),
+    duties,
+    charge,
+    inrush,
+    verdict: graver(worst, watched ? 'watch' : 'clear'),
+    nearPeak,
+    distortingSharePct,
+    networkUnknown,
+    exceededAlready: bankDuties.exceededAlready,
+  };
+}
+
+function dischargeDuty(bank: Bank, charge: ChargeStage, rules: RuleSet): Duty[] {
+  const fittedOhm = bank.groups[charge.group]!.dischargeOhm;
+  if (fittedOhm === null) return [];
+  const source = CAPACITOR_RULES[rules].dischargeSource;
+  const row = new DutyRow({ name: 'discharge', group: charge.group, unit: 'Ω', source, nearRatio: 1 });
+  row.take(fittedOhm, charge.requiredOhm, { levelKvar: null, corner: null, orderH: null });
+  return [row.duty()!];
+}
+
+function inrushDuty(bank: Bank, inrush: InrushStage, rules: RuleSet): Duty[] {
+  if (inrush.limitPeakA === null) return [];
+  const peakA = Math.max(inrush.singlePeakA, inrush.ontoBankPeakA ?? 0);
+  const limitA = inrush.limitPeakA;
+  const source = bank.groups[inrush.group]!.switchPeakA === limitA ? 'site' : CAPACITOR_RULES[rules].source;
+  const row = new DutyRow({ name: 'inrush current', group: inrush.group, unit: 'A', source, nearRatio: NEAR_RATIO.other });
+  row.take(peakA, limitA, { levelKvar: null, corner: null, orderH: null });
+  const duty = row.duty()!;
+  // Over the limit only because of a customary inductance between stages: reactors or an inrush-limiting switch are due.
+  const assumed = !bank.interStageGiven && inrush.singlePeakA <= limitA;
+  return [duty.verdict === 'avoid' && assumed ? { ...duty, verdict: 'watch' } : duty];
+}
+
+function plainSharePct(bank: Bank, basis: JudgeBasis): number | null {
+  const ratedKva = basis.supply.transformers.reduce((sum, t) => sum + t.ratedKva, 0);
+  if (ratedKva === 0 || !bank.groups.some((group) => group.reactorPct === 0 && group.count > 0)) return null;
+  const distortingA = (basis.loads.distorting ?? []).reduce((sum, load) => sum + load.fundamentalA, 0);
+  const sharePct = (100 * Math.sqrt(3) * basis.voltages.nominalV * distortingA) / 1000 / ratedKva;
+  return sharePct > PLAIN_SHARE_PCT ? sharePct : null;
+}

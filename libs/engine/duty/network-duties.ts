@@ -1,0 +1,152 @@
+import type { Flow } from '../network/flow.js';
+import type { NetworkModel } from '../network/network-model.js';
+import { type CurrentLimits, currentLimits } from './current-limits.js';
+import { type Duty, DutyRow, NEAR_RATIO, type Place, ratioVerdict } from './duty-row.js';
+import type { RuleSet, Verdict } from './rules.js';
+import { type VoltageLimits, voltageLimits } from './voltage-limits.js';
+
+/** A limit exceeded without the bank already counts against the bank only beyond this share of the limit. */
+const BASELINE_SHARE = 0.01;
+
+/** The same quantities with the bank out, per network. */
+interface Baseline {
+  distortionPct: number;
+  currentPct: number;
+  voltagePct: Float64Array;
+  sourcePct: Float64Array;
+}
+
+/** Limits of the network at the bus. */
+export interface NetworkLimits {
+  voltage: VoltageLimits;
+  /** null where the rule set has no current limits or no load current is known */
+  current: CurrentLimits | null;
+}
+
+/**
+ * The limits that apply at the bus; I_sc/I_L is taken at the least fault level.
+ * @param basis rules, bus voltage, class, least fault level [MVA] and I_L [A]
+ * @returns limits with their editions
+ * @source ieee-519-2022, iec-61000-2-4
+ */
+export function networkLimits(basis: {
+  rules: RuleSet;
+  nominalV: number;
+  emcClass: 1 | 2 | 3;
+  shortCircuitMinMva: number;
+  loadA: number;
+}): NetworkLimits {
+  const shortCircuitA = (basis.shortCircuitMinMva * 1e6) / (Math.sqrt(3) * basis.nominalV);
+  return {
+    voltage: voltageLimits(basis.rules, basis.nominalV, basis.emcClass),
+    current: basis.rules === 'ieee' && basis.loadA > 0 ? currentLimits(shortCircuitA / basis.loadA) : null,
+  };
+}
+
+/** Collects the network's duties over levels above 0; level 0 is the baseline of its own network. */
+export class NetworkDuties {
+  readonly #model: NetworkModel;
+  readonly #limits: NetworkLimits;
+  readonly #known: boolean;
+  readonly #baselines: Baseline[] = [];
+  readonly #rows: Record<'distortion' | 'voltage' | 'currentDistortion' | 'current', DutyRow>;
+  /** exceeded somewhere, and by no more than without the bank */
+  exceededAlready = false;
+
+  /**
+   * @param model the network without the bank
+   * @param limits limits at the bus
+   * @param known false where loads or background are unknown: then nothing is judged clear
+   */
+  constructor(model: NetworkModel, limits: NetworkLimits, known: boolean) {
+    this.#model = model;
+    this.#limits = limits;
+    this.#known = known;
+    const head = (name: string, source: string): DutyRow =>
+      new DutyRow({ name, group: null, unit: '%', source, nearRatio: NEAR_RATIO.other });
+    const currentSource = limits.current?.source ?? '';
+    this.#rows = {
+      distortion: head('voltage distortion', limits.voltage.source),
+      voltage: head('harmonic voltage', limits.voltage.source),
+      currentDistortion: head('current distortion', currentSource),
+      current: head('harmonic current', currentSource),
+    };
+  }
+
+  /** @param flow the next flow; level 0 first */
+  take(flow: Flow): void {
+    if (flow.level === 0) this.#takeBaseline(flow);
+    else this.#takeLevel(flow);
+  }
+
+  #takeBaseline(flow: Flow): void {
+    if (this.#baselines[flow.corner.network] !== undefined) return;
+    this.#baselines[flow.corner.network] = {
+      distortionPct: flow.voltageDistortionPct,
+      currentPct: flow.currentDistortionPct,
+      voltagePct: flow.voltageV.map((v) => this.#voltagePct(v)),
+      sourcePct: flow.sourceA.map((a) => this.#sourcePct(a)),
+    };
+  }
+
+  #takeLevel(flow: Flow): void {
+    const baseline = this.#baselines[flow.corner.network]!;
+    const place: Place = { levelKvar: flow.levelKvar, corner: flow.corner.corner, orderH: null };
+    const { voltage, current } = this.#limits;
+    this.#takeAgainst(this.#rows.distortion, place, {
+      value: flow.voltageDistortionPct,
+      limit: voltage.distortionPct,
+      without: baseline.distortionPct,
+    });
+    for (let i = 0; i < flow.ordersH.length; i++) {
+      const orderH = flow.ordersH[i]!;
+      const limit = voltage.orderPct(orderH);
+      if (limit !== null) {
+        const value = this.#voltagePct(flow.voltageV[i]!);
+        this.#takeAgainst(this.#rows.voltage, { ...place, orderH }, { value, limit, without: baseline.voltagePct[i]! });
+      }
+      if (current === null) continue;
+      this.#takeAgainst(
+        this.#rows.current,
+        { ...place, orderH },
+        {
+          value: this.#sourcePct(flow.sourceA[i]!),
+          limit: current.orderPct(orderH),
+          without: baseline.sourcePct[i]!,
+        },
+      );
+    }
+    if (current === null || flow.ordersH.length === 0) return;
+    this.#takeAgainst(this.#rows.currentDistortion, place, {
+      value: flow.currentDistortionPct,
+      limit: current.totalPct,
+      without: baseline.currentPct,
+    });
+  }
+
+  #takeAgainst(row: DutyRow, place: Place, met: { value: number; limit: number; without: number }): void {
+    row.take(met.value, met.limit, place, (ratio) => this.#judge(ratio, met));
+  }
+
+  #judge(ratio: number, met: { value: number; limit: number; without: number }): Verdict {
+    const verdict = ratioVerdict(ratio, NEAR_RATIO.other);
+    if (verdict !== 'avoid' || met.value - met.without > BASELINE_SHARE * met.limit) return verdict;
+    this.exceededAlready = true;
+    return 'watch';
+  }
+
+  #voltagePct(phaseV: number): number {
+    return (100 * phaseV * Math.sqrt(3)) / this.#model.nominalV;
+  }
+
+  #sourcePct(phaseA: number): number {
+    return this.#model.loadA > 0 ? (100 * phaseA) / this.#model.loadA : 0;
+  }
+
+  /** @returns the rows; with unknown loads what was found within limits is not judged */
+  duties(): Duty[] {
+    return Object.values(this.#rows)
+      .flatMap((row) => row.duty() ?? [])
+      .map((duty) => (this.#known || duty.verdict !== 'clear' ? duty : { ...duty, verdict: null }));
+  }
+}

@@ -1,0 +1,81 @@
+import type { Supply } from '../supply/supply.js';
+import { type SupplyPath, supplyPath } from '../supply/supply-path.js';
+import type { Loads } from './loads.js';
+
+/** One combination of the uncertain quantities. */
+export interface Corner {
+  faultLevelMva: number;
+  capacitanceFactor: number;
+  inductanceFactor: number;
+  dampingKw: number;
+}
+
+/** The network without the bank: one supply path and one damping load. */
+export interface NetworkCase {
+  path: SupplyPath;
+  dampingKw: number;
+}
+
+/** A corner with the places of its network and of its tolerance factors. */
+export interface CornerCase {
+  corner: Corner;
+  /** index into `networks` */
+  network: number;
+  /** index into `factors` */
+  factors: number;
+}
+
+/** Capacitance and inductance relative to the nameplate. */
+export interface ToleranceFactors {
+  capacitanceFactor: number;
+  inductanceFactor: number;
+}
+
+/** All corners, nominal first, and the networks and factors they are made of. */
+export interface CornerSet {
+  corners: CornerCase[];
+  networks: NetworkCase[];
+  factors: ToleranceFactors[];
+}
+
+const CAPACITANCE_FACTORS = [0.95, 1.1];
+const INDUCTANCE_FACTORS = [0.97, 1.03];
+
+/**
+ * Corners in their fixed order: nominal (greatest fault level, factors 1, most damping, u_k as given), then fault level
+ * {max, min} × capacitance {0.95, 1.10} × inductance {0.97, 1.03} × damping {0, min, max, distinct}, the last running
+ * fastest. The greatest fault level goes with u_k·(1−t), the least with u_k·(1+t).
+ * @param supply settled supply
+ * @param loads settled loads
+ * @param nominalV bus voltage [V]
+ * @returns corners with their networks and factors
+ * @source method-network
+ */
+export function cornerSet(supply: Supply, loads: Loads, nominalV: number): CornerSet {
+  const { max, min } = supply.faultLevelMva;
+  const dampingsKw = [...new Set([0, loads.dampingKw.min, loads.dampingKw.max])];
+  const networks: NetworkCase[] = [
+    { path: supplyPath(supply, nominalV, max, 'asGiven'), dampingKw: loads.dampingKw.max },
+  ];
+  const factors: ToleranceFactors[] = [{ capacitanceFactor: 1, inductanceFactor: 1 }];
+  for (const capacitanceFactor of CAPACITANCE_FACTORS) {
+    for (const inductanceFactor of INDUCTANCE_FACTORS) factors.push({ capacitanceFactor, inductanceFactor });
+  }
+  const corners: CornerCase[] = [
+    { corner: { faultLevelMva: max, ...factors[0]!, dampingKw: loads.dampingKw.max }, network: 0, factors: 0 },
+  ];
+  const ends = [
+    { faultLevelMva: max, path: supplyPath(supply, nominalV, max, 'least') },
+    { faultLevelMva: min, path: supplyPath(supply, nominalV, min, 'most') },
+  ];
+  for (const { faultLevelMva, path } of ends) {
+    const first = networks.length;
+    networks.push(...dampingsKw.map((dampingKw) => ({ path, dampingKw })));
+    for (let f = 1; f < factors.length; f++) {
+      for (const [k, dampingKw] of dampingsKw.entries()) {
+        corners.push({ corner: { faultLevelMva, ...factors[f]!, dampingKw }, network: first + k, factors: f });
+      }
+    }
+  }
+  return { corners, networks, factors };
+}

@@ -1,0 +1,136 @@
+import type { Bank } from '../layout/bank.js';
+import type { Level } from '../layout/levels.js';
+import type { ComplexColumn } from './bus-admittance.js';
+import type { CornerCase } from './corners.js';
+import type { NetworkModel } from './network-model.js';
+import { stageAdmittance, stageBranch } from './stage-admittance.js';
+import { combine } from './summation.js';
+
+/** Harmonic voltages and currents at one level in one corner, at the orders present; arrays are reused between visits. */
+export interface Flow {
+  /** index into the levels; 0 is the bank out */
+  level: number;
+  levelKvar: number;
+  /** connected stages per group */
+  vector: Int32Array;
+  corner: CornerCase;
+  ordersH: Float64Array;
+  /** V_h, phase value [V] */
+  voltageV: Float64Array;
+  /** current in the source path, per phase [A] */
+  sourceA: Float64Array;
+  /** current of the whole bank, per phase [A] */
+  bankA: Float64Array;
+  /** current of one stage of each group, per phase [A] */
+  stageA: Float64Array[];
+  /** THD of voltage, % of nominal */
+  voltageDistortionPct: number;
+  /** total demand distortion of the source current, % of I_L; 0 where I_L is 0 */
+  currentDistortionPct: number;
+}
+
+/** A bank's admittances at the orders present. */
+export interface BankModel {
+  bank: Bank;
+  levels: Level[];
+  /** [factors][group] */
+  stages: ComplexColumn[][];
+}
+
+/**
+ * Tables one stage of every group in every tolerance corner at the orders present.
+ * @param model the network without the bank
+ * @param bank the bank
+ * @param levels its levels
+ * @returns admittances per factors and group
+ * @source method-network
+ */
+export function bankModel(model: NetworkModel, bank: Bank, levels: Level[]): BankModel {
+  const exponent = model.corners.networks[0]!.path.resistanceExponent;
+  return {
+    bank,
+    levels,
+    stages: model.corners.factors.map((factors) =>
+      bank.groups.map((group) => stageAdmittance(stageBranch(group, factors, exponent), model.excitation.ordersH)),
+    ),
+  };
+}
+
+/**
+ * Visits the flow of every level, corner and count vector, in that order of nesting.
+ * Z = 1/(Y₀ + Y_bank); from the loads V = |Z|·I, source current |Z/Z_s|·I; from the background E behind the source
+ * V = |E·Z/Z_s|, source current |E·(1 − Z/Z_s)/Z_s|; each pair combined with the order's exponent.
+ * @param model the network without the bank
+ * @param bank the bank's admittances
+ * @param visit called with one flow object that is reused
+ * @source method-network
+ */
+export function eachFlow(model: NetworkModel, bank: BankModel, visit: (flow: Flow) => void): void {
+  const n = model.excitation.ordersH.length;
+  const flow: Flow = {
+    level: 0,
+    levelKvar: 0,
+    vector: new Int32Array(bank.bank.groups.length),
+    corner: model.corners.corners[0]!,
+    ordersH: model.excitation.ordersH,
+    voltageV: new Float64Array(n),
+    sourceA: new Float64Array(n),
+    bankA: new Float64Array(n),
+    stageA: bank.bank.groups.map(() => new Float64Array(n)),
+    voltageDistortionPct: 0,
+    currentDistortionPct: 0,
+  };
+  for (const [k, level] of bank.levels.entries()) {
+    for (const corner of model.corners.corners) {
+      for (const vector of level.vectors) {
+        flow.level = k;
+        flow.levelKvar = level.levelKvar;
+        flow.vector = vector;
+        flow.corner = corner;
+        flowInto(model, bank.stages[corner.factors]!, flow);
+        visit(flow);
+      }
+    }
+  }
+}
+
+function flowInto(model: NetworkModel, stages: readonly ComplexColumn[], flow: Flow): void {
+  const { excitation, nominalV, loadA } = model;
+  const table = model.atOrders[flow.corner.network]!;
+  let voltageSquare = 0;
+  let currentSquare = 0;
+  for (let i = 0; i < excitation.ordersH.length; i++) {
+    let bankRe = 0;
+    let bankIm = 0;
+    for (let g = 0; g < stages.length; g++) {
+      bankRe += flow.vector[g]! * stages[g]!.re[i]!;
+      bankIm += flow.vector[g]! * stages[g]!.im[i]!;
+    }
+    const yRe = table.bus.re[i]! + bankRe;
+    const yIm = table.bus.im[i]! + bankIm;
+    const zMagnitude = 1 / Math.hypot(yRe, yIm);
+    const sRe = table.source.re[i]!;
+    const sIm = table.source.im[i]!;
+    const sMagnitude = Math.hypot(sRe, sIm);
+    // 1 − Z/Z_s = (Z_s·Y − 1)/(Z_s·Y)
+    const zyRe = sRe * yRe - sIm * yIm;
+    const zyIm = sRe * yIm + sIm * yRe;
+    const share = zMagnitude / sMagnitude;
+    const remainder = Math.hypot(zyRe - 1, zyIm) * share;
+    const alpha = excitation.exponent[i]!;
+    const injected = excitation.injectedA[i]!;
+    const background = excitation.backgroundV[i]!;
+    const v = combine(zMagnitude * injected, background * share, alpha);
+    const source = combine(share * injected, (background * remainder) / sMagnitude, alpha);
+    flow.voltageV[i] = v;
+    flow.sourceA[i] = source;
+    flow.bankA[i] = v * Math.hypot(bankRe, bankIm);
+    for (let g = 0; g < stages.length; g++) {
+      flow.stageA[g]![i] = v * Math.hypot(stages[g]!.re[i]!, stages[g]!.im[i]!);
+    }
+    voltageSquare += v * v;
+    currentSquare += source * source;
+  }
+  flow.voltageDistortionPct = (100 * Math.sqrt(voltageSquare)) / (nominalV / Math.sqrt(3));
+  flow.currentDistortionPct = loadA > 0 ? (100 * Math.sqrt(currentSquare)) / loadA : 0;
+}

@@ -1,0 +1,55 @@
+import type { LoadRecord } from '../record/load-record.js';
+import { primaryFromBus } from '../supply/transformer-passage.js';
+import { type BusLoad, cannotCarry } from '../requirement/bus-load.js';
+
+/** What the meter would have read with the bank; length n. */
+export interface MeterAfter {
+  /** [kW] */
+  activeKw: Float64Array;
+  /** [kvar] */
+  laggingKvar: Float64Array;
+  /** [kvar] */
+  leadingKvar: Float64Array;
+}
+
+/**
+ * The meter's columns after the bank. Δ = the fall of net Q at the meter:
+ * lagging' = max(lagging − Δ, 0), leading' = leading + max(Δ − lagging, 0); where net Q rises (an old bank taken
+ * away) the same with the sides changed, so that leading kvar are used up before lagging ones appear.
+ * @param record as metered, length n
+ * @param load the load's own power at the bus, length n
+ * @param connectedKvar kvar at the bus, length n
+ * @returns columns at the meter, length n
+ * @throws InputProblem where the transformers can't carry an interval
+ * @source method-requirement
+ */
+export function meterAfter(record: LoadRecord, load: BusLoad, connectedKvar: Float64Array): MeterAfter {
+  const n = connectedKvar.length;
+  const after: MeterAfter = {
+    activeKw: new Float64Array(n),
+    laggingKvar: new Float64Array(n),
+    leadingKvar: new Float64Array(n),
+  };
+  for (let i = 0; i < n; i++) {
+    const lagging = record.laggingKvar[i]!;
+    const leading = record.leadingKvar[i]!;
+    let activeKw = record.activeKw[i]!;
+    let netKvar = load.reactiveKvar[i]! - connectedKvar[i]!;
+    if (load.metering.at === 'primary') {
+      const primary = primaryFromBus(load.metering.passage, load.activeKw[i]!, netKvar);
+      if (primary === null) throw cannotCarry(record.beginS[i]!, load.activeKw[i]!, netKvar);
+      activeKw = primary.activeKw;
+      netKvar = primary.reactiveKvar;
+    }
+    const fall = lagging - leading - netKvar;
+    after.activeKw[i] = activeKw;
+    if (fall >= 0) {
+      after.laggingKvar[i] = Math.max(lagging - fall, 0);
+      after.leadingKvar[i] = leading + Math.max(fall - lagging, 0);
+    } else {
+      after.leadingKvar[i] = Math.max(leading + fall, 0);
+      after.laggingKvar[i] = lagging + Math.max(-fall - leading, 0);
+    }
+  }
+  return after;
+}

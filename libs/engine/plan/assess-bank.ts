@@ -1,0 +1,45 @@
+import { InputProblem, remark, type Watch } from '../problem.js';
+import type { LoadRecord } from '../record/load-record.js';
+import type { ZoneTable } from '../record/zone-table.js';
+import type { Outcome } from './outcome.js';
+import { outcomeOf } from './outcome-of.js';
+import { settleBank, settleControl } from './settle-bank.js';
+import type { Site } from './site.js';
+import { studySite } from './study.js';
+
+/**
+ * Judges the site's own bank against the record.
+ * @param site validated site with a `bank`
+ * @param record the meter's record
+ * @param zone the site's zone over the record
+ * @param watch progress and stopping
+ * @returns the outcome
+ * @throws InputProblem where the site has no bank or the inputs contradict each other
+ * @source method-limits
+ */
+export function assessBank(site: Site, record: LoadRecord, zone: ZoneTable, watch?: Watch): Outcome {
+  if (site.bank === undefined) {
+    throw new InputProblem([{ code: 'missing', path: 'bank', expected: 'the bank to judge', found: 'nothing' }]);
+  }
+  const study = studySite(site, record, zone);
+  watch?.report(0.3);
+  const { bank, assumptions, findings } = settleBank(site.bank, site.frequencyHz);
+  const settled = settleControl(site.control, bank, study.site);
+  const unused = unusedPapers(site).map((name) => remark('money.unused', { name }, { path: name }));
+  const outcome = outcomeOf('assess', study, {
+    bank,
+    control: settled.control,
+    said: { reasons: findings, assumptions: [...assumptions, ...settled.assumptions, ...unused] },
+  });
+  watch?.report(1);
+  return outcome;
+}
+
+/**
+ * Parts of the site file that are validated and not used yet.
+ * @param site validated site
+ * @returns their keys
+ */
+export function unusedPapers(site: Site): string[] {
+  return (['tariff', 'prices', 'finance'] as const).filter((key) => site[key] !== undefined);
+}

@@ -1,0 +1,233 @@
+import type { Bank } from '../layout/bank.js';
+import { neutralA } from '../network/spectra.js';
+import { supplyPath } from '../supply/supply-path.js';
+import { bankFigures } from './bank-figures.js';
+import { type Figure, figure } from './figure.js';
+import type { Result } from './result.js';
+import type { Operated, Study } from './study.js';
+
+/**
+ * Every deciding figure with its formula and the values put in.
+ * @param study site and record
+ * @param bank the bank
+ * @param operated the bank simulated
+ * @param result the result so far
+ * @returns figures in the order of the job
+ * @source method-figures
+ */
+export function figures(study: Study, bank: Bank, operated: Operated, result: Result): Figure[] {
+  return [
+    ...recordFigures(result),
+    ...requirementFigures(study, result),
+    ...supplyFigures(study, result),
+    ...bankFigures(study, bank, result),
+    ...operationFigures(study, bank, operated, result),
+    ...dutyFigures(result),
+  ];
+}
+
+const PF = { formula: 'E_p / √(E_p^2 + E_q^2)', source: 'IEC 60050-131' };
+
+function recordFigures({ record }: Result): Figure[] {
+  if (record.powerFactorLagging === null || record.powerFactorNet === null) return [];
+  return [
+    figure('record.powerFactorLagging', { value: record.powerFactorLagging, unit: '' }, PF, [
+      ['E_p', record.activeKwh, 'kWh'],
+      ['E_q', record.laggingKvarh, 'kvarh'],
+    ]),
+    figure('record.powerFactorNet', { value: record.powerFactorNet, unit: '' }, PF, [
+      ['E_p', record.activeKwh, 'kWh'],
+      ['E_q', record.laggingKvarh - record.leadingKvarh, 'kvarh'],
+    ]),
+  ];
+}
+
+function requirementFigures(study: Study, result: Result): Figure[] {
+  const { requirement } = result;
+  const worst = study.needKvar.indexOf(requirement.maxKvar);
+  const p = study.load.activeKw[worst]!;
+  const q = study.load.reactiveKvar[worst]!;
+  const ascending = Float64Array.from(study.needKvar).sort();
+  const position = (ascending.length - 1) * 0.99;
+  const below = Math.floor(position);
+  const need =
+    study.load.metering.at === 'bus'
+      ? figure(
+          'requirement.maxKvar',
+          { value: requirement.maxKvar, unit: 'kvar' },
+          { formula: 'max(0, Q − P · √(1 / λ^2 − 1))', source: 'method, requirement' },
+          [
+            ['Q', q, 'kvar'],
+            ['P', study.target.onExport === 'absolute' ? Math.abs(p) : Math.max(0, p), 'kW'],
+            ['λ', requirement.targetPowerFactor, ''],
+          ],
+        )
+      : figure(
+          'requirement.maxKvar',
+          { value: requirement.maxKvar, unit: 'kvar' },
+          { formula: 'Q − Q_t', source: 'method, requirement, meter at the primary' },
+          [
+            ['Q_t', q - requirement.maxKvar, 'kvar'],
+            ['Q', q, 'kvar'],
+          ],
+        );
+  return [
+    need,
+    figure(
+      'requirement.p99Kvar',
+      { value: requirement.p99Kvar, unit: 'kvar' },
+      { formula: 'a + f · (b − a)', source: 'method, requirement' },
+      [
+        ['a', ascending[below]!, 'kvar'],
+        ['b', ascending[Math.min(ascending.length - 1, below + 1)]!, 'kvar'],
+        ['f', position - below, ''],
+      ],
+    ),
+  ];
+}
+
+function supplyFigures(study: Study, result: Result): Figure[] {
+  const { supply, nominalV } = study.site;
+  const ends = [
+    { id: 'network.shortCircuitMva', fault: supply.faultLevelMva.max, end: 'least' as const, value: result.network.shortCircuitMva },
+    { id: 'network.shortCircuitMinMva', fault: supply.faultLevelMva.min, end: 'most' as const, value: result.network.shortCircuitMinMva },
+  ];
+  return ends.flatMap(({ id, fault, end, value }) => {
+    const path = supplyPath(supply, nominalV, fault, end);
+    const transformer = parallelOhm(path.transformers);
+    return [
+      figure(
+        `${id}.sourceMohm`,
+        { value: path.source.xOhm * 1000, unit: 'mΩ' },
+        { formula: 'U^2 / S_q / √(1 + ρ^2) / 1000', source: 'IEC 60909-0, no voltage factor' },
+        [
+          ['U', nominalV, 'V'],
+          ['S_q', fault, 'MVA'],
+          ['ρ', supply.rOverX, ''],
+        ],
+      ),
+      figure(
+        id,
+        { value, unit: 'MVA' },
+        { formula: 'U^2 / √((R_q + R_t)^2 + (X_q + X_t)^2) / 1000', source: 'method, network' },
+        [
+          ['U', nominalV, 'V'],
+          ['R_q', path.source.rOhm * 1000, 'mΩ'],
+          ['R_t', transformer.rOhm * 1000, 'mΩ'],
+          ['X_q', path.source.xOhm * 1000, 'mΩ'],
+          ['X_t', transformer.xOhm * 1000, 'mΩ'],
+        ],
+      ),
+    ];
+  });
+}
+
+function parallelOhm(parts: readonly { rOhm: number; xOhm: number }[]): { rOhm: number; xOhm: number } {
+  if (parts.length === 0) return { rOhm: 0, xOhm: 0 };
+  let g = 0;
+  let b = 0;
+  for (const { rOhm, xOhm } of parts) {
+    const square = rOhm * rOhm + xOhm * xOhm;
+    g += rOhm / square;
+    b += xOhm / square;
+  }
+  const square = g * g + b * b;
+  return { rOhm: g / square, xOhm: b / square };
+}
+
+function operationFigures(study: Study, bank: Bank, operated: Operated, result: Result): Figure[] {
+  const found: Figure[] = [];
+  const lowest = result.operation.months
+    .filter((month) => month.powerFactorLagging !== null)
+    .reduce<(typeof result.operation.months)[number] | null>(
+      (low, month) => (low === null || month.powerFactorLagging! < low.powerFactorLagging! ? month : low),
+      null,
+    );
+  if (lowest !== null) {
+    found.push(
+      figure('operation.lowestMonthPowerFactor', { value: lowest.powerFactorLagging!, unit: '' }, PF, [
+        ['E_p', lowest.activeKwh, 'kWh'],
+        ['E_q', lowest.laggingKvarh, 'kvarh'],
+      ]),
+    );
+  }
+  if (bank.groups.length > 0) found.push(...transformerFigures(study, operated));
+  const neutral = neutralA(study.site.loads.distorting ?? []);
+  if (neutral > 0) {
+    found.push(
+      figure(
+        'loads.neutralA',
+        { value: neutral, unit: 'A' },
+        { formula: '3 · I_0', source: 'derived: zero-sequence currents add in the neutral' },
+        [['I_0', neutral / 3, 'A']],
+      ),
+    );
+  }
+  return found;
+}
+
+// At the interval of greatest apparent power before the bank; what the transformer carries is the bus power.
+function transformerFigures(study: Study, operated: Operated): Figure[] {
+  const { activeKw, reactiveKvar } = study.load;
+  let peak = 0;
+  for (let i = 1; i < activeKw.length; i++) {
+    const at = (k: number): number => activeKw[k]! ** 2 + reactiveKvar[k]! ** 2;
+    if (at(i) > at(peak)) peak = i;
+  }
+  const p = activeKw[peak]!;
+  const q = reactiveKvar[peak]!;
+  const b = operated.deliveredKvar[peak]!;
+  const found = [
+    figure(
+      'operation.freedKva',
+      { value: Math.hypot(p, q) - Math.hypot(p, q - b), unit: 'kVA' },
+      { formula: '√(P^2 + Q^2) − √(P^2 + (Q − B)^2)', source: 'method, requirement' },
+      [
+        ['P', p, 'kW'],
+        ['Q', q, 'kvar'],
+        ['B', b, 'kvar'],
+      ],
+    ),
+  ];
+  const distortionPct = distortionAtPeakPct(study);
+  if (distortionPct > 0 && p > 0) {
+    found.push(
+      figure(
+        'loads.truePowerFactorAfter',
+        { value: p / Math.hypot(p, q - b) / Math.sqrt(1 + (distortionPct / 100) ** 2), unit: '' },
+        { formula: 'P / √(P^2 + (Q − B)^2) / √(1 + (D / 100)^2)', source: 'Grady and Gilleskie 1993' },
+        [
+          ['P', p, 'kW'],
+          ['Q', q, 'kvar'],
+          ['B', b, 'kvar'],
+          ['D', distortionPct, '%'],
+        ],
+      ),
+    );
+  }
+  return found;
+}
+
+// Injected harmonic current as a share of the greatest load current: what no bank can mend.
+function distortionAtPeakPct(study: Study): number {
+  const { excitation, loadA } = study.model;
+  const square = excitation.injectedA.reduce((sum, a) => sum + a * a, 0);
+  return loadA > 0 ? (100 * Math.sqrt(square)) / loadA : 0;
+}
+
+function dutyFigures(result: Result): Figure[] {
+  return result.duties.flatMap((duty, k) => {
+    if (duty.limit === null || duty.ratio === null || !(duty.limit > 0)) return [];
+    return [
+      figure(
+        `duties[${k}].sharePct`,
+        { value: 100 * duty.ratio, unit: '%' },
+        { formula: '100 · x / x_max', source: duty.source },
+        [
+          ['x_max', duty.limit, duty.unit],
+          ['x', duty.value, duty.unit],
+        ],
+      ),
+    ];
+  });
+}

@@ -1,0 +1,148 @@
+import { InputProblem, type Problem, type Remark, remark } from '../problem.js';
+import { compensatedSum } from '../quantity/compensated-sum.js';
+import type { LoadRecord } from '../record/load-record.js';
+import type { Loads, LoadsInput } from '../network/loads.js';
+import type { Supply, SupplyInput } from '../supply/supply.js';
+import type { SettledSite } from './outcome.js';
+import type { Site } from './site.js';
+
+/** A site with its defaults filled in, and a line for each of them. */
+export interface Settled {
+  site: SettledSite;
+  assumptions: Remark[];
+}
+
+/** Collects the values that were taken where the site file gave none. */
+class Defaults {
+  readonly assumptions: Remark[] = [];
+
+  take<T extends number | string>(given: T | undefined, otherwise: T, path: string, unit?: string): T {
+    if (given !== undefined) return given;
+    this.note(`default.${path}`, path, { value: otherwise }, unit);
+    return otherwise;
+  }
+
+  note(code: string, path: string, values: Record<string, number | string>, unit?: string): void {
+    this.assumptions.push(remark(code, values, unit === undefined ? { path } : { path, unit }));
+  }
+}
+
+/**
+ * Fills in every default of the site and says so, one assumption each.
+ * @param site validated site
+ * @param record the meter's record; null for a scan, where damping counts as 0 unless given
+ * @returns the settled site and its assumptions
+ * @throws InputProblem where parts contradict each other
+ * @source method-conventions
+ */
+export function settleSite(site: Site, record: LoadRecord | null): Settled {
+  const problems = contradictions(site);
+  if (problems.length > 0) throw new InputProblem(problems);
+  const defaults = new Defaults();
+  const hasTransformer = (site.supply.transformers ?? []).length > 0;
+  const highestRatio = site.rules === 'iec' ? 1.1 : 1.058;
+  const settled: SettledSite = {
+    name: site.name,
+    asOf: site.asOf ?? null,
+    timeZone: site.timeZone,
+    currency: site.currency ?? null,
+    rules: site.rules,
+    frequencyHz: site.frequencyHz,
+    nominalV: site.bus.nominalV,
+    highestV: defaults.take(site.bus.highestV, highestRatio * site.bus.nominalV, 'bus.highestV', 'V'),
+    meteredAt: site.meteredAt ?? 'bus',
+    recordedBank: site.recordedBank ?? { state: 'none' },
+    targetPowerFactor: defaults.take(site.target?.powerFactor, 0.95, 'target.powerFactor'),
+    onExport: defaults.take(site.target?.onExport, 'importOnly', 'target.onExport'),
+    supply: settleSupply(site.supply, defaults),
+    loads: settleLoads(site.loads, record, defaults),
+    emcClass: site.rules === 'iec' ? (defaults.take(site.limits?.emcClass, 2, 'limits.emcClass') as 1 | 2 | 3) : 2,
+  };
+  if (site.recordedBank === undefined) defaults.note('default.recordedBank', 'recordedBank', {});
+  if (!hasTransformer) defaults.note('supply.noTransformer', 'supply.transformers', {});
+  return { site: settled, assumptions: defaults.assumptions };
+}
+
+function contradictions(site: Site): Problem[] {
+  const problems: Problem[] = [];
+  const transformers = site.supply.transformers ?? [];
+  if (transformers.length > 0 && site.meteredAt === undefined) {
+    problems.push({ code: 'missing', path: 'meteredAt', expected: '"bus" or "primary"', found: 'nothing' });
+  }
+  if (transformers.length === 0 && site.meteredAt === 'primary') {
+    problems.push({
+      code: 'inconsistent',
+      path: 'supply.transformers',
+      expected: 'a transformer, since the meter is at the primary',
+      found: 'none',
+    });
+  }
+  if (transformers.length > 1 && site.supply.arrangement === undefined) {
+    problems.push({
+      code: 'missing',
+      path: 'supply.arrangement',
+      expected: '"parallel" or "separate", since there are several transformers',
+      found: 'nothing',
+    });
+  }
+  if (transformers.length > 1 && site.supply.arrangement === 'separate') {
+    problems.push({
+      code: 'not-supported-yet',
+      path: 'supply.arrangement',
+      expected: '"parallel": boards of their own are judged one site file each',
+      found: '"separate"',
+    });
+  }
+  if (site.recordedBank?.state === 'switching') {
+    problems.push({
+      code: 'not-supported-yet',
+      path: 'recordedBank.state',
+      expected: '"none", "out", "fixed", "logged" or "unknown"',
+      found: '"switching"',
+    });
+  }
+  return problems;
+}
+
+function settleSupply(supply: SupplyInput, defaults: Defaults): Supply {
+  const { max, min } = supply.faultLevelMva;
+  return {
+    faultLevelMva: { max, min: defaults.take(min, max, 'supply.faultLevelMva.min', 'MVA') },
+    rOverX: defaults.take(supply.rOverX, 0.1, 'supply.rOverX'),
+    resistanceExponent: defaults.take(supply.resistanceExponent, 0.5, 'supply.resistanceExponent'),
+    rippleHz: supply.rippleHz ?? null,
+    transformers: (supply.transformers ?? []).map((transformer, i) => {
+      const path = `supply.transformers[${i}]`;
+      const part = (name: string): string => `${path}.${name}`;
+      return {
+        ratedKva: transformer.ratedKva,
+        impedancePct: transformer.impedancePct,
+        impedanceTolerancePct: takePart(defaults, transformer.impedanceTolerancePct, 10, part('impedanceTolerancePct'), '%'),
+        loadLossKw: takePart(defaults, transformer.loadLossKw, 0, part('loadLossKw'), 'kW'),
+        noLoadLossKw: takePart(defaults, transformer.noLoadLossKw, 0, part('noLoadLossKw'), 'kW'),
+        noLoadCurrentPct: takePart(defaults, transformer.noLoadCurrentPct, 0, part('noLoadCurrentPct'), '%'),
+      };
+    }),
+  };
+}
+
+// A member of a list keeps its own path; the code names the field alone, so that one sentence serves all.
+function takePart(defaults: Defaults, given: number | undefined, otherwise: number, path: string, unit: string): number {
+  if (given !== undefined) return given;
+  defaults.note(`default.${path.replaceAll(/\[\d+\]/g, '')}`, path, { value: otherwise }, unit);
+  return otherwise;
+}
+
+function settleLoads(loads: LoadsInput | undefined, record: LoadRecord | null, defaults: Defaults): Loads {
+  const meanKw = record === null ? 0 : Math.max(0, compensatedSum(record.activeKw) / record.activeKw.length);
+  const max = defaults.take(loads?.dampingKw?.max, meanKw, 'loads.dampingKw.max', 'kW');
+  if (loads?.distorting?.length === 0) defaults.note('loads.distorting.none', 'loads.distorting', {});
+  if (loads?.backgroundPct?.length === 0) defaults.note('loads.backgroundPct.none', 'loads.backgroundPct', {});
+  return {
+    motorSharePct: defaults.take(loads?.motorSharePct, 60, 'loads.motorSharePct', '%'),
+    distorting: loads?.distorting ?? null,
+    backgroundPct: loads?.backgroundPct ?? null,
+    dampingKw: { max, min: Math.min(max, defaults.take(loads?.dampingKw?.min, 0, 'loads.dampingKw.min', 'kW')) },
+    summation: defaults.take(loads?.summation, 'exponent', 'loads.summation'),
+  };
+}

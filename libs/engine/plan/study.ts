@@ -1,0 +1,131 @@
+import type { Bank } from '../layout/bank.js';
+import { type NetworkModel, networkModel } from '../network/network-model.js';
+import type { Control } from '../operation/control.js';
+import { type MeterAfter, meterAfter } from '../operation/meter-after.js';
+import { type OperationMonth, operationMonths, type Simulated } from '../operation/operation.js';
+import { simulate } from '../operation/simulate.js';
+import { switchedBank } from '../operation/switched-bank.js';
+import type { Remark } from '../problem.js';
+import { tanFromPowerFactor } from '../quantity/power-factor.js';
+import type { LoadRecord } from '../record/load-record.js';
+import { type RecordSummary, summarizeRecord } from '../record/record-summary.js';
+import { type MonthIndex, monthIndex, type ZoneTable } from '../record/zone-table.js';
+import { type BusLoad, busLoad, type Metering, type OldBank } from '../requirement/bus-load.js';
+import { needColumn, type Target, targetKw } from '../requirement/need.js';
+import { type RequirementSummary, summarizeRequirement } from '../requirement/requirement.js';
+import { transformerPassage } from '../supply/transformer-passage.js';
+import type { SettledSite } from './outcome.js';
+import { settleSite } from './settle-site.js';
+import type { Site } from './site.js';
+
+/** Everything about a site and its record that does not depend on the bank. */
+export interface Study {
+  site: SettledSite;
+  record: LoadRecord;
+  zone: ZoneTable;
+  assumptions: Remark[];
+  target: Target;
+  load: BusLoad;
+  needKvar: Float64Array;
+  months: MonthIndex;
+  recordSummary: RecordSummary;
+  requirement: RequirementSummary;
+  model: NetworkModel;
+  /** (U/U_nom)² per interval, or null */
+  voltageScale: Float64Array | null;
+}
+
+/**
+ * Prepares a site and its record: defaults, load at the bus, need, network without the bank.
+ * @param site validated site
+ * @param record the meter's record
+ * @param zone the site's zone over the record
+ * @returns what every candidate bank is judged against
+ * @throws InputProblem where the inputs contradict each other
+ * @source method-requirement
+ */
+export function studySite(site: Site, record: LoadRecord, zone: ZoneTable): Study {
+  const { site: settled, assumptions } = settleSite(site, record);
+  const metering: Metering =
+    settled.meteredAt === 'primary' ? { at: 'primary', passage: transformerPassage(settled.supply) } : { at: 'bus' };
+  const load = busLoad(record, metering, oldBank(settled));
+  const target: Target = { powerFactor: settled.targetPowerFactor, onExport: settled.onExport };
+  const needKvar = needColumn(load, target, record.beginS);
+  const months = monthIndex(record.beginS, zone);
+  const loadA = (greatestKva(load) * 1000) / (Math.sqrt(3) * settled.nominalV);
+  return {
+    site: settled,
+    record,
+    zone,
+    assumptions,
+    target,
+    load,
+    needKvar,
+    months,
+    recordSummary: summarizeRecord(record),
+    requirement: summarizeRequirement(record, needKvar, months, settled.targetPowerFactor),
+    model: networkModel(settled.supply, settled.loads, settled.nominalV, loadA),
+    voltageScale: record.voltageV?.map((u) => (u / settled.nominalV) ** 2) ?? null,
+  };
+}
+
+function oldBank(site: SettledSite): OldBank {
+  if (site.recordedBank.state === 'fixed') return { state: 'fixed', kvar: site.recordedBank.kvar };
+  return site.recordedBank.state === 'logged' ? { state: 'logged' } : { state: 'none' };
+}
+
+function greatestKva(load: BusLoad): number {
+  let square = 0;
+  for (let i = 0; i < load.activeKw.length; i++) {
+    square = Math.max(square, load.activeKw[i]! ** 2 + load.reactiveKvar[i]! ** 2);
+  }
+  return Math.sqrt(square);
+}
+
+/** A bank simulated over the record. */
+export interface Operated extends Simulated {
+  control: Control;
+  months: OperationMonth[];
+}
+
+/**
+ * Simulates a bank over the record and totals the meter after it.
+ * @param study site and record
+ * @param bank the bank
+ * @param control settings
+ * @returns columns and monthly energies at the meter
+ * @source method-controller
+ */
+export function operate(study: Study, bank: Bank, control: Control): Operated {
+  const { record, load } = study;
+  const tanSet = tanFromPowerFactor(control.setPointPowerFactor);
+  const wantedKvar = new Float64Array(record.beginS.length);
+  for (let i = 0; i < wantedKvar.length; i++) {
+    wantedKvar[i] = load.reactiveKvar[i]! - targetKw(load.activeKw[i]!, study.target.onExport) * tanSet;
+  }
+  const view = { ...record, wantedKvar, voltageScale: study.voltageScale };
+  const run = simulate(switchedBank(bank, study.site.nominalV), control, view);
+  const scale = study.voltageScale;
+  const deliveredKvar = scale === null ? run.connectedKvar : run.connectedKvar.map((kvar, i) => kvar * scale[i]!);
+  const meter = meterAfter(record, load, deliveredKvar);
+  return {
+    beginS: record.beginS,
+    intervalS: record.intervalS,
+    load,
+    run,
+    deliveredKvar,
+    meter,
+    control,
+    months: operationMonths(meter, study.months, record.intervalS / 3600),
+  };
+}
+
+/**
+ * Meter columns with a constant kvar connected throughout; a bound on what any bank of that size can do.
+ * @param study site and record
+ * @param kvar connected at the bus [kvar]
+ * @returns columns at the meter
+ */
+export function meterWithConstant(study: Study, kvar: number): MeterAfter {
+  return meterAfter(study.record, study.load, new Float64Array(study.record.beginS.length).fill(kvar));
+}

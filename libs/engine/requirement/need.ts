@@ -1,0 +1,77 @@
+import { tanFromPowerFactor } from '../quantity/power-factor.js';
+import { primaryFromBus, type TransformerPassage } from '../supply/transformer-passage.js';
+import { type BusLoad, cannotCarry } from './bus-load.js';
+
+/** What the target asks for. */
+export interface Target {
+  powerFactor: number;
+  onExport: 'importOnly' | 'absolute';
+}
+
+/**
+ * The active power the target is held against: max(P, 0), or |P| where the target says `absolute`.
+ * @param activeKw P [kW]
+ * @param onExport how exported power counts
+ * @returns P⁺ [kW]
+ * @source method-requirement
+ */
+export function targetKw(activeKw: number, onExport: Target['onExport']): number {
+  return onExport === 'absolute' ? Math.abs(activeKw) : Math.max(activeKw, 0);
+}
+
+/**
+ * kvar needed at the bus so that the target holds at the meter, one value an interval.
+ * At the bus q = max(0, Q − P⁺·tan φ); behind transformers the q for which the primary has Q₁ = P₁⁺·tan φ.
+ * @param load power at the bus, length n
+ * @param target power factor and how export counts
+ * @param beginS interval beginnings, for the message of a refusal [s]
+ * @returns need [kvar], length n, ≥ 0, to 1e-6 kvar
+ * @throws InputProblem where the transformers can't carry an interval
+ * @source method-requirement
+ */
+export function needColumn(load: BusLoad, target: Target, beginS: Float64Array): Float64Array {
+  const tan = tanFromPowerFactor(target.powerFactor);
+  const n = load.activeKw.length;
+  const needKvar = new Float64Array(n);
+  for (let i = 0; i < n; i++) {
+    const p = load.activeKw[i]!;
+    const q = load.reactiveKvar[i]!;
+    if (load.metering.at === 'bus') {
+      needKvar[i] = Math.max(0, q - targetKw(p, target.onExport) * tan);
+      continue;
+    }
+    const need = primaryNeedKvar(load.metering.passage, p, q, { tan, onExport: target.onExport });
+    if (need === null) throw cannotCarry(beginS[i]!, p, q);
+    needKvar[i] = need;
+  }
+  return needKvar;
+}
+
+interface TargetSlope {
+  tan: number;
+  onExport: Target['onExport'];
+}
+
+// Excess at the primary falls almost one for one with the bus kvar, so the secant settles in three or four steps.
+function primaryNeedKvar(passage: TransformerPassage, p: number, q: number, slope: TargetSlope): number | null {
+  const excess = (bankKvar: number): number => {
+    const primary = primaryFromBus(passage, p, q - bankKvar);
+    if (primary === null) return Number.NaN;
+    return primary.reactiveKvar - targetKw(primary.activeKw, slope.onExport) * slope.tan;
+  };
+  let low = 0;
+  let fLow = excess(0);
+  if (Number.isNaN(fLow)) return null;
+  if (fLow <= 0) return 0;
+  let high = fLow;
+  let fHigh = excess(high);
+  for (let step = 0; step < 60 && Math.abs(high - low) > 1e-10 && fHigh !== fLow; step++) {
+    const next = high - (fHigh * (high - low)) / (fHigh - fLow);
+    low = high;
+    fLow = fHigh;
+    high = next;
+    fHigh = excess(next);
+    if (Number.isNaN(fHigh)) return null;
+  }
+  return Math.max(0, high);
+}
