@@ -290,32 +290,4 @@ describe('a tariff', () => {
   it('that is empty is accepted: it has no clauses yet', () => {
     expect(problemsOf({})).toEqual([]);
   });
-
-  it.each([
-    ['leave a gap', [{ ...windows[0], hours: [[7, 22]] }, windows[1], windows[2]], 'none at month 1, Monday, 22:00'],
-    [
-      'overlap',
-      [{ ...windows[0], hours: [[6.5, 22.5]] }, windows[1], windows[2]],
-      'day and night at month 1, Monday, 06:30',
-    ],
-    [
-      'forget the holidays',
-      [windows[0], windows[1], { name: 'weekend', days: [6, 7] }],
-      'none at month 1, a holiday, 00:00',
-    ],
-    [
-      'forget a month',
-      [...windows.slice(0, 2), { ...windows[2], months: [1, 2, 3, 4, 5, 6, 7, 8, 9, 10, 12] }],
-      'none at month 11, Saturday, 00:00',
-    ],
-  ])('whose priced windows %s is refused with the moment', (_what, changed, found) => {
-    expect(problemsOf({ windows: changed, clauses: [{ ...energy, prices }] })).toEqual([
-      expect.objectContaining({ path: 'tariff.clauses[0].prices', code: 'inconsistent', found }),
-    ]);
-  });
-
-  it('need share out only the months its clause has', () => {
-    const summer = [...windows.slice(0, 2), { ...windows[2], months: [6, 7, 8] }];
-    expect(problemsOf({ windows: summer, clauses: [{ ...energy, prices, months: [6, 7, 8] }] })).toEqual([]);
-  });
 });

@@ -2,6 +2,7 @@ import { InputProblem, localTime, type ZoneTable } from '#libs/engine/index.js';
 import { shown } from './shown.js';
 
 const DAY_S = 86_400;
+const RECORD_MARGIN_S = 40 * DAY_S;
 const LONGEST_SPAN_S = 400 * 366 * DAY_S;
 /** The calendar used is the Gregorian one; moments before it and after four-digit years are refused. */
 const EARLIEST_S = Date.UTC(1600, 0, 1) / 1000;
@@ -29,6 +30,17 @@ export function zoneTable(zone: string, fromS: number, toS: number): ZoneTable {
   const fixedS = fixedOffsetS(zone);
   if (fixedS !== null) return { zone, fromS: [firstS], offsetS: [fixedS] };
   return scannedTable(zone, firstS, lastS);
+}
+
+/**
+ * The table a record's months are found by: its own span and more than a month on either side.
+ * Whoever hashes a plan's inputs takes this one, so that equal inputs have equal hashes.
+ * @param zone IANA name, "UTC", or a fixed offset
+ * @param record a load record
+ * @returns the table
+ */
+export function zoneTableOf(zone: string, record: { firstS: number; endS: number }): ZoneTable {
+  return zoneTable(zone, record.firstS - RECORD_MARGIN_S, record.endS + RECORD_MARGIN_S);
 }
 
 /**
