@@ -1,0 +1,84 @@
+import { parseArgs } from 'node:util';
+import { InputProblem, type Problem } from '#libs/engine/index.js';
+import type { Command } from './commands.js';
+
+/** What was typed after the command's name. */
+export interface CommandLine {
+  command: string;
+  operand: string;
+  values: Map<string, string>;
+  flags: Set<string>;
+}
+
+/** Standard input stands for one file only. */
+export const STDIN = '-';
+
+/**
+ * Sorts the arguments of a command.
+ * @param name the command's name
+ * @param command what it takes
+ * @param args what was typed after its name
+ * @returns operand, values and flags
+ * @throws InputProblem of code `usage`, naming every argument that doesn't fit
+ */
+export function readCommandLine(name: string, command: Command, args: string[]): CommandLine {
+  const options = {
+    ...Object.fromEntries(Object.keys(command.values).map((key) => [key, { type: 'string' as const }])),
+    ...Object.fromEntries(command.flags.map((key) => [key, { type: 'boolean' as const }])),
+  };
+  const { tokens } = parseArgs({ args, options, strict: false, allowPositionals: true, tokens: true });
+  const values = new Map<string, string>();
+  const flags = new Set<string>();
+  const operands: string[] = [];
+  const problems: Problem[] = [];
+  for (const token of tokens) {
+    if (token.kind === 'positional') operands.push(token.value);
+    if (token.kind === 'option') problems.push(...takeOption(token, command, values, flags));
+  }
+  problems.push(...operandProblems(command, operands), ...stdinProblems(operands, values));
+  if (problems.length > 0) throw new InputProblem(problems);
+  return { command: name, operand: operands[0]!, values, flags };
+}
+
+function takeOption(
+  token: { name: string; rawName: string; value: string | undefined },
+  command: Command,
+  values: Map<string, string>,
+  flags: Set<string>,
+): Problem[] {
+  const { name, rawName, value } = token;
+  if (values.has(name) || flags.has(name)) return [usage(`${rawName} once`, 'it twice')];
+  const word = Object.hasOwn(command.values, name) ? command.values[name] : undefined;
+  if (word !== undefined) {
+    if (value === undefined || value === '') return [usage(`${rawName} ${word}`, 'no value')];
+    values.set(name, value);
+    return [];
+  }
+  if (!command.flags.includes(name)) {
+    const known = [...Object.keys(command.values), ...command.flags].map((key) => `--${key}`);
+    return [usage(`one of ${known.join(', ')}`, rawName)];
+  }
+  if (value !== undefined) return [usage(`${rawName} without a value`, JSON.stringify(value))];
+  flags.add(name);
+  return [];
+}
+
+function operandProblems({ operand }: Command, operands: string[]): Problem[] {
+  if (operands.length === 1) return [];
+  return [usage(`one ${operand}`, operands.length === 0 ? 'none' : operands.join(' '))];
+}
+
+function stdinProblems(operands: string[], values: Map<string, string>): Problem[] {
+  const files = [...operands, values.get('load'), values.get('map')].filter((file) => file === STDIN);
+  const toStdin = values.get('pdf') === STDIN ? [usage('--pdf with the name of a file', '"-"')] : [];
+  return files.length > 1 ? [usage('"-" for one file only', `it ${files.length} times`), ...toStdin] : toStdin;
+}
+
+/**
+ * A problem with how the program was called.
+ * @param expected what should have been typed
+ * @param found what was
+ */
+export function usage(expected: string, found: string): Problem {
+  return { code: 'usage', expected, found };
+}

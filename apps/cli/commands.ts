@@ -1,0 +1,96 @@
+import type { CommandLine } from './command-line.js';
+
+/** How a command is called and where it stands. */
+export interface Command {
+  /** what its one operand is */
+  operand: string;
+  /** options that take a value, with a word for it */
+  values: Record<string, string>;
+  /** options that don't */
+  flags: readonly string[];
+  /** one line */
+  does: string;
+  details: string;
+  load(): Promise<{ run(line: CommandLine): Promise<number> }>;
+}
+
+const METER_OPTIONS = { format: 'FORMAT', map: 'FILE', 'time-zone': 'ZONE' };
+
+const METER_DETAILS = `  --format FORMAT    format of the meter file, where it is not recognised by itself
+  --map FILE         JSON: columns, separator, decimal mark, what stamps mark, repairs; also an answer to a question
+  --time-zone ZONE   zone of local stamps: "Europe/Dublin", "UTC", "+10:00"
+`;
+
+const PLAN_DETAILS = `  --load METER-FILE  the meter's record
+  --pdf OUT          write the proposal there
+${METER_DETAILS}`;
+
+/** Every command; a command's own file is loaded when it is called. */
+export const COMMANDS: Record<string, Command> = {
+  read: {
+    operand: 'METER-FILE',
+    values: METER_OPTIONS,
+    flags: ['json', 'intervals', 'csv'],
+    does: 'read a meter file and say what it holds',
+    details: `${METER_DETAILS}  --intervals        with every valid interval (JSON)
+  --csv              the intervals as CSV in UTC
+`,
+    load: () => import('./read.js'),
+  },
+  plan: {
+    operand: 'SITE',
+    values: { load: 'METER-FILE', pdf: 'OUT', ...METER_OPTIONS },
+    flags: ['json'],
+    does: 'design a bank for a site and judge it',
+    details: PLAN_DETAILS,
+    load: () => import('./plan.js'),
+  },
+  assess: {
+    operand: 'SITE',
+    values: { load: 'METER-FILE', pdf: 'OUT', ...METER_OPTIONS },
+    flags: ['json'],
+    does: "judge the site's own bank against the record",
+    details: PLAN_DETAILS,
+    load: () => import('./assess.js'),
+  },
+  scan: {
+    operand: 'SITE',
+    values: { level: 'KVAR', orders: 'A:B:STEP' },
+    flags: ['json'],
+    does: 'network impedance over harmonic order',
+    details: `  --level KVAR       the level that is connected; all stages where not given
+  --orders A:B:STEP  orders to compute, 1:50:0.02 where not given
+`,
+    load: () => import('./scan.js'),
+  },
+};
+
+/**
+ * What the program does, for a terminal.
+ * @returns text with a final line break
+ */
+export function overview(): string {
+  const lines = Object.entries(COMMANDS).map(
+    ([name, { operand, does }]) => `  ${`${name} ${operand}`.padEnd(18)} ${does}\n`,
+  );
+  return `varwright COMMAND …   plans power-factor-correction banks from a meter's record
+
+${lines.join('')}
+Every command takes --json (one JSON document on stdout, on failure too) and --help; - reads standard input.
+Exit: 0 done, 1 fault of ours, 2 usage, 3 input refused or a question, 6 done with a verdict of avoid, 130 interrupted.
+`;
+}
+
+/**
+ * How one command is called.
+ * @param name a key of COMMANDS
+ * @returns text with a final line break
+ */
+export function helpOf(name: string): string {
+  const command = COMMANDS[name];
+  if (command === undefined) throw new Error(`no command ${name}`);
+  return `varwright ${name} ${command.operand} [options]   ${command.does}
+
+${command.details}  --json             one JSON document on stdout, on failure too
+`;
+}

@@ -1,0 +1,29 @@
+import { EXIT } from '#libs/contract/error-body.js';
+import { InputProblem, summarizeRecord } from '#libs/engine/index.js';
+import { recordColumns } from '#libs/meter-files/record-columns.js';
+import { writeRecordCsv } from '#libs/meter-files/write-record-csv.js';
+import { recordInWords } from '#libs/present/put-in-words.js';
+import { recordReport } from '#libs/present/terminal-report.js';
+import { type CommandLine, usage } from './command-line.js';
+import { readMeterRecord } from './meter-record.js';
+import { write, writeJson } from './output.js';
+
+/** `read METER-FILE`: what a meter file holds. */
+export async function run(line: CommandLine): Promise<number> {
+  const { flags } = line;
+  if (flags.has('csv') && (flags.has('json') || flags.has('intervals'))) {
+    throw new InputProblem([usage('--csv alone', 'it beside --json or --intervals')]);
+  }
+  const { record, quality } = await readMeterRecord(line, line.operand);
+  const summary = recordInWords(summarizeRecord(record));
+  if (flags.has('csv')) {
+    await write(writeRecordCsv(record));
+  } else if (flags.has('intervals')) {
+    await writeJson({ record: summary, quality, columns: recordColumns(record) });
+  } else if (flags.has('json')) {
+    await writeJson({ record: summary, quality });
+  } else {
+    await write(recordReport(summary));
+  }
+  return EXIT.done;
+}
