@@ -52,7 +52,7 @@ export function phasors(outcome: Outcome): Chart {
 function worstMoment(outcome: Outcome): Moment {
   const { series, result } = outcome;
   const worst = result.operation.worstIntervals[0];
-  let at = worst === undefined ? 0 : series.beginS.findIndex((s) => s === worst.beginS);
+  let at = worst === undefined ? 0 : series.beginS.indexOf(worst.beginS);
   if (worst === undefined) {
     for (let i = 1; i < series.needKvar.length; i++) if (series.needKvar[i]! > series.needKvar[at]!) at = i;
   }

@@ -43,7 +43,7 @@ export function drawCells(paper: Paper, chart: Chart, box: Omit<Box, 'height'>, 
   paper.artifact(() => {
     for (const mark of chart.marks) {
       if (mark.kind !== 'cell' || mark.row < rows.from || mark.row >= rows.to) continue;
-      fillCell(paper, mark.fill, cellBox(mark.row, mark.column), mark.text, size);
+      fillCell(paper, mark, cellBox(mark.row, mark.column), size);
     }
     doc
       .lineWidth(STROKE.load)
@@ -80,7 +80,7 @@ export function drawCells(paper: Paper, chart: Chart, box: Omit<Box, 'height'>, 
   });
 }
 
-function fillCell(paper: Paper, fill: CellFill, box: Box, text: string, size: number): void {
+function fillCell(paper: Paper, { fill, text }: { fill: CellFill; text: string }, box: Box, size: number): void {
   const { doc } = paper;
   if (fill === 'quiet') doc.rect(box.x, box.y, box.width, box.height).fill(WASH);
   if (fill === 'solid') doc.rect(box.x, box.y, box.width, box.height).fill(INK);

@@ -66,7 +66,7 @@ export function drawTable(
 
   const drawHead = (tagged: boolean) => {
     const top = paper.y;
-    const put = (at: number) => drawLines(paper, head[at]!, LABEL, places[at]!, top);
+    const put = (at: number) => drawLines(paper, head[at]!, LABEL, { ...places[at]!, inset: 0, top });
     if (tagged) {
       paper.within('TR', () => {
         for (const at of columns.keys()) paper.tagged('TH', () => put(at), { scope: 'Column' });
@@ -127,12 +127,11 @@ function drawLines(
   paper: Paper,
   lines: readonly Line[],
   style: Style,
-  place: Place & { inset?: number },
-  top: number,
+  at: Place & { inset: number; top: number },
 ): void {
   lines.forEach((line, n) => {
-    const x = place.right ? place.x + place.width - line.width : place.x + (place.inset ?? 0);
-    paper.type.draw(line, x, top + n * leading(style) + rise(style));
+    const x = at.right ? at.x + at.width - line.width : at.x + at.inset;
+    paper.type.draw(line, x, at.top + n * leading(style) + rise(style));
   });
 }
 
@@ -151,7 +150,7 @@ function drawRow(paper: Paper, row: readonly SetCell[], { places, style, top }: 
         const box = { x: place.x, y: top, width: place.width, height: leading(style) };
         paper.artifact(() => cell.draw!(box));
       }
-      paper.tagged('TD', () => drawLines(paper, cell.lines, style, { ...place, inset: cell.inset }, top));
+      paper.tagged('TD', () => drawLines(paper, cell.lines, style, { ...place, inset: cell.inset, top }));
     });
   });
 }

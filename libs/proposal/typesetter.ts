@@ -14,6 +14,8 @@ export interface Style {
 
 export const BODY: Style = { size: 9.75, weight: 'regular', ink: INK, tabular: false };
 
+/** A piece that ends its line. */
+export const NEW_LINE = '\n';
 /** A stretch of text; an object changes the look of its stretch only. */
 export type Piece = string | (Partial<Style> & { text: string });
 
@@ -62,6 +64,12 @@ export class Typesetter {
    * @returns at least one line, none wider than `width` unless a single character is
    */
   wrap(pieces: readonly Piece[], style: Style, width: number): Line[] {
+    const end = pieces.indexOf(NEW_LINE);
+    if (end < 0) return this.wrapped(pieces, style, width);
+    return [...this.wrapped(pieces.slice(0, end), style, width), ...this.wrap(pieces.slice(end + 1), style, width)];
+  }
+
+  private wrapped(pieces: readonly Piece[], style: Style, width: number): Line[] {
     const lines: Line[] = [];
     let line: Line = { segments: [], width: 0 };
     for (const word of this.words(pieces, style)) {
@@ -141,19 +149,23 @@ export class Typesetter {
   private breakWord(word: Line, width: number): Line[] {
     const parts: Line[] = [{ segments: [], width: 0 }];
     for (const segment of word.segments) {
-      for (const chunk of segment.text.split(SOFT_BREAK)) {
-        const fitted = this.segment({ text: chunk, font: segment.font }, segment.style);
-        const small = fitted.width <= width ? [chunk] : (chunk.match(/\P{M}\p{M}*/gsu) ?? []);
-        for (const text of small) {
-          const part = this.segment({ text, font: segment.font }, segment.style);
-          const last = parts.at(-1)!;
-          if (last.segments.length > 0 && last.width + part.width > width) {
-            parts.push({ segments: [part], width: part.width });
-          } else append(last, { segments: [part], width: part.width }, 0);
-        }
+      for (const text of this.pieceable(segment, width)) {
+        const part = this.segment({ text, font: segment.font }, segment.style);
+        const last = parts.at(-1)!;
+        if (last.segments.length > 0 && last.width + part.width > width) {
+          parts.push({ segments: [part], width: part.width });
+        } else append(last, { segments: [part], width: part.width }, 0);
       }
     }
     return parts;
+  }
+
+  /** Parts of a word that may part company; letter by letter where even a part is too long. */
+  private pieceable({ text, font, style }: Segment, width: number): string[] {
+    return text.split(SOFT_BREAK).flatMap((chunk) => {
+      const fits = this.measure(chunk, font, style) <= width;
+      return fits ? [chunk] : (chunk.match(/\P{M}\p{M}*/gsu) ?? []);
+    });
   }
 
   private measure(text: string, font: string, style: Style): number {

@@ -1,0 +1,93 @@
+import type { Duty, Figure } from '#libs/engine/index.js';
+import { formatNumber, GAP, MINUS } from './format-number.js';
+
+/** What a figure is called; `[*]` stands for a group's number. */
+const LABELS: Readonly<Record<string, string>> = {
+  'record.powerFactorLagging': 'power factor of the record, lagging kvarh only',
+  'record.powerFactorNet': 'power factor of the record, leading kvarh taken off',
+  'requirement.maxKvar': 'greatest need',
+  'requirement.p99Kvar': 'need passed in 1 % of the record',
+  'network.shortCircuitMva.sourceMohm': 'reactance of the supply at the greatest fault level',
+  'network.shortCircuitMva': 'fault level at the bus',
+  'network.shortCircuitMinMva.sourceMohm': 'reactance of the supply at the least fault level',
+  'network.shortCircuitMinMva': 'least fault level at the bus',
+  'bank.group[*].capacitiveOhm': 'capacitive reactance of one stage',
+  'bank.group[*].effectiveKvar': 'effective kvar of one stage',
+  'bank.group[*].capacitorV': 'voltage on the capacitor',
+  'bank.group[*].ratedA': 'rated current of one stage',
+  'bank.group[*].tunedOrderH': 'tuned order',
+  'bank.effectiveKvar': 'effective kvar of the bank',
+  'bank.voltageRisePct': 'voltage rise with all stages in',
+  'network.parallelOrderClosedFormH': 'parallel resonance with all stages in, closed form',
+  conductorMinA: 'least rated current of conductors and disconnector',
+  'charge.stages[*].capacitanceUf': 'capacitance of one phase of the delta',
+  'charge.stages[*].dischargeMaxOhm': 'greatest discharge resistor by the standard',
+  'charge.stages[*].reconnectMaxOhm': 'greatest resistor for the reconnection delay',
+  'charge.stages[*].timeToTenPctS': 'time to 10 % with the resistor fitted',
+  'inrush.stages[*].singlePeakA': 'inrush peak of a single stage',
+  'inrush.stages[*].ontoBankPeakA': 'inrush peak onto the rest of the bank',
+  'operation.lowestMonthPowerFactor': 'power factor of the lowest month with the bank',
+  'operation.freedKva': 'apparent power freed at the peak',
+  'loads.truePowerFactorAfter': 'true power factor at the peak with the bank',
+  'loads.neutralA': 'neutral current of the single-phase loads’ third harmonics',
+};
+
+const SYMBOL = /[\p{L}_][\p{L}\d_]*/gu;
+
+/**
+ * A figure with its label and its working: the formula with the values put in.
+ * @param figure from the engine
+ * @param duties rows of the result, which name the figures of their shares
+ * @returns the same figure, label and working filled
+ */
+export function figureInWords(figure: Figure, duties: readonly Duty[]): Figure {
+  return { ...figure, label: labelOf(figure.id, duties), working: workingOf(figure) };
+}
+
+/**
+ * What a figure is called.
+ * @param id its stable name
+ * @param duties rows of the result
+ * @returns label in small letters; the id itself where the table holds none
+ */
+export function labelOf(id: string, duties: readonly Duty[]): string {
+  const place = /\[(\d+)\]/.exec(id);
+  const at = Number(place?.[1] ?? 0);
+  if (id.startsWith('duties[')) {
+    const duty = duties[at];
+    return duty === undefined ? id : `${dutyName(duty)}, share of its limit`;
+  }
+  const label = LABELS[id.replace(/\[\d+\]/, '[*]')];
+  if (label === undefined) return id;
+  return place === null ? label : `${label}, group${GAP}${at + 1}`;
+}
+
+/**
+ * A duty's name with its group and order where it has them.
+ * @param duty a row of the result
+ * @returns "capacitor current, group 1", "harmonic voltage, order 19"
+ */
+export function dutyName(duty: Duty): string {
+  const group = duty.group === null ? '' : `, group${GAP}${duty.group + 1}`;
+  const order = duty.orderH === null ? '' : `, order${GAP}${formatNumber(duty.orderH, 'given')}`;
+  return `${duty.name}${group}${order}`;
+}
+
+/**
+ * The formula with the values put in: plain arithmetic that gives the value within the digits printed.
+ * @param figure formula and inputs
+ * @returns for example "1 / √(0.07)"; π and the names of functions stay
+ */
+export function workingOf(figure: Figure): string {
+  const values = new Map(figure.inputs.map(({ symbol, value }) => [symbol, value]));
+  return figure.formula.replace(SYMBOL, (name) => {
+    const value = values.get(name);
+    return value === undefined ? name : plainNumber(value);
+  });
+}
+
+/** Without gaps between thousands, so that the working is arithmetic for any calculator. */
+function plainNumber(value: number): string {
+  const text = formatNumber(value, 'working').replaceAll(GAP, '');
+  return text.startsWith(MINUS) ? `(${text})` : text;
+}

@@ -1,0 +1,13 @@
+import { ASSUMPTION_MESSAGES } from './assumption-messages.js';
+import { CAUTION_MESSAGES } from './caution-messages.js';
+import type { Messages } from './message.js';
+import { NOTE_MESSAGES } from './note-messages.js';
+import { REASON_MESSAGES } from './reason-messages.js';
+
+/** One sentence for every code of a remark. */
+export const MESSAGES: Messages = {
+  ...REASON_MESSAGES,
+  ...ASSUMPTION_MESSAGES,
+  ...CAUTION_MESSAGES,
+  ...NOTE_MESSAGES,
+};

@@ -1,0 +1,28 @@
+import type { RecordSummary, Result } from '#libs/engine/index.js';
+import { figureInWords } from './figure-words.js';
+import { remarkInWords } from './remark-words.js';
+
+/**
+ * Fills the words of a result: the text of every remark, the label and working of every figure.
+ * @param result from the engine
+ * @returns a copy with words; numbers untouched
+ */
+export function putInWords(result: Result): Result {
+  return {
+    ...result,
+    record: recordInWords(result.record),
+    reasons: result.reasons.map(remarkInWords),
+    assumptions: result.assumptions.map(remarkInWords),
+    cautions: result.cautions.map(remarkInWords),
+    figures: result.figures.map((figure) => figureInWords(figure, result.duties)),
+  };
+}
+
+/**
+ * Fills the words of a record's notes.
+ * @param summary from the engine
+ * @returns a copy with words
+ */
+export function recordInWords(summary: RecordSummary): RecordSummary {
+  return { ...summary, notes: summary.notes.map(remarkInWords) };
+}

@@ -1,0 +1,104 @@
+import type { Messages } from './message.js';
+
+const WHERE = '[ of group {group}][ at order {orderH}]';
+const MET = '[, met with {levelKvar} connected][, fault level {faultLevelMva}][, damping load {dampingKw}]';
+
+/** Why a verdict is what it is. */
+export const REASON_MESSAGES: Messages = {
+  'limit.exceeded': {
+    level: 'blocks issue',
+    text: `{duty}${WHERE} is over its limit: {value} against {limit}${MET}.`,
+    subject: `{duty}${WHERE}${MET}`,
+    consequence: 'Change the bank or the network until the limit is kept.',
+  },
+  'limit.near': {
+    level: 'to be accepted',
+    text: `{duty}${WHERE} is near its limit: {value} against {limit}${MET}.`,
+    subject: `{duty}${WHERE}${MET}`,
+    consequence: 'Accept the margin, or change the bank.',
+  },
+  'limit.exceededAlready': {
+    level: 'to be accepted',
+    text: `{duty}${WHERE} is exceeded without the bank already: {value} against {limit}${MET}. The bank adds little to it.`,
+    subject: `{duty}${WHERE}${MET}. Exceeded without the bank already.`,
+    consequence: 'Settle the distortion at its sources; the bank does not mend it.',
+  },
+  'inrush.assumedInductance': {
+    level: 'to be accepted',
+    text: `{duty}${WHERE} is over its limit with an assumed inductance between stages: {value} against {limit}.`,
+    subject: `{duty}${WHERE}${MET}. The inductance between stages is assumed.`,
+    consequence: 'Give the inductance between stages, or fit reactors or an inrush-limiting switch.',
+  },
+  'peak.near': {
+    level: 'to be accepted',
+    text:
+      'With {levelKvar} connected the network’s parallel resonance lies at order {peakOrderH}, within {reachH} of order ' +
+      '{presentOrderH}, which is present[, fault level {faultLevelMva}][, damping load {dampingKw}].',
+    consequence: 'Measure the distortion at this level before it is used for long, or move the resonance.',
+  },
+  'plain.distortingShare': {
+    level: 'to be accepted',
+    text: 'Distorting loads make up {sharePct} of the transformer rating, more than is customary beside stages without reactors.',
+    consequence: 'Compare the same bank with reactors.',
+  },
+  'network.unknownLoads': {
+    level: 'to be accepted',
+    text: 'The distorting loads are unknown, so the network is not judged.',
+    consequence: 'List them, or declare with an empty list that there are none.',
+  },
+  'network.unknownBackground': {
+    level: 'to be accepted',
+    text: 'The distortion of the supply is unknown, so the network is not judged.',
+    consequence: 'Ask the network operator for it, or declare with an empty list that there is none.',
+  },
+  'recordedBank.unknown': {
+    level: 'to be accepted',
+    text: 'Whether a bank was working while the record was taken is unknown, so the load’s own kvar are not known.',
+    consequence: 'Find out, and give it as the recorded bank.',
+  },
+  'record.short': {
+    level: 'to be accepted',
+    text: 'The record covers {days:day|days}: a season, a shutdown or a busy month may be missing from it.',
+    consequence: 'Plan again on a longer record before the bank is ordered.',
+  },
+  'record.partYear': {
+    level: 'to be noted',
+    text: 'The record covers {days:day|days}, less than a year.',
+    consequence: 'Months outside the record are not covered.',
+  },
+  'need.none': {
+    level: 'information',
+    text: 'No bank is needed: the site holds {targetPowerFactor} already.',
+    consequence: 'Nothing is to be built.',
+  },
+  'target.missed': {
+    level: 'to be accepted',
+    text: 'The target {targetPowerFactor} is missed in {months:month|months}; {month} stays lowest, at {powerFactor}.',
+    consequence: 'Accept it, or allow a larger bank.',
+  },
+  'target.met': {
+    level: 'information',
+    text: 'The target {targetPowerFactor} is met in every month of the record.',
+    consequence: '',
+  },
+  'operation.overCorrection': {
+    level: 'to be accepted',
+    text: 'The bank adds up to {overKvar} of leading kvar in an interval, more than its smallest stage, {smallestKvar}.',
+    consequence: 'Take a smaller smallest stage, or accept leading kvar at these times.',
+  },
+  'switchings.lowerBound': {
+    level: 'information',
+    text: 'Switchings are counted on means over {intervalS}; faster swings are hidden in them, so the counts are lower bounds.',
+    consequence: 'Expect more operations than counted.',
+  },
+  'reconnection.short': {
+    level: 'blocks issue',
+    text: 'The reconnection delay of {reconnectDelayS} is shorter than the standard’s own resistor allows for group {group}, {naturalS}.',
+    consequence: 'Confirm that a resistor of {requiredOhm} or less is fitted, or lengthen the delay.',
+  },
+  'bank.ratioDisagrees': {
+    level: 'to be accepted',
+    text: 'The stated reactor ratio, {statedPct}, disagrees with the nameplate’s capacitance and inductance, {derivedPct}, which was used.',
+    consequence: 'Read the nameplates again.',
+  },
+};
