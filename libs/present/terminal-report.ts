@@ -1,185 +1,168 @@
-import {
-  type BankSummary,
-  type NetworkLevel,
-  type Outcome,
-  type RecordSummary,
-  type Remark,
-  type RequirementSummary,
-  type Result,
-  UTC_TABLE,
-} from '#libs/engine/index.js';
-import { formatApart, formatNumber, formatQuantity } from './format-number.js';
+import { type Outcome, type RecordSummary, type ScannedLevel, UTC_TABLE, type ZoneTable } from '#libs/engine/index.js';
+import { dutyName } from './figure-words.js';
+import { formatApart, formatNumber, formatQuantity, GAP } from './format-number.js';
 import { formatLength, formatMoment } from './local-stamp.js';
-import { countDuties, NO_PERMISSION, VERDICT_WORDS, verdictWords } from './verdict-words.js';
+import { plainName } from './plain-name.js';
+import { proposedWords } from './proposed-words.js';
+import { remarkConsequence, remarkSentence } from './remark-words.js';
+import { countDuties, NO_PERMISSION, verdictWords } from './verdict-words.js';
 
-/** Width of the column of headings. */
-const HEADING = 13;
-
-/**
- * A meter file's record for a terminal.
- * @param record statistics, notes in words
- * @returns lines with a final break
- */
-export function recordReport(record: RecordSummary): string {
-  return lines(recordLines(record));
-}
+const LABEL_WIDTH = 26;
+const LINE_WIDTH = 96;
 
 /**
- * A plan or an assessment for a terminal: the decision first, the grounds after it.
- * @param outcome the result in words
- * @returns lines with a final break
+ * The answer of `plan` or `assess` for a terminal.
+ * @param outcome the plan or judgement
+ * @returns lines of plain text, ending in a line end
  */
-export function resultReport({ kind, site, result }: Outcome): string {
-  const { judged, notJudged } = countDuties(result.duties);
-  const what = kind === 'plan' ? 'proposed' : 'the site’s bank';
-  return lines([
-    `${site.name}: ${what}: ${bankWords(result.bank)}: ${VERDICT_WORDS[result.verdict]}`,
-    `${judged} rows judged, ${notJudged} not judged. ${NO_PERMISSION}`,
+export function resultReport(outcome: Outcome): string {
+  const { result, site, zone } = outcome;
+  const { requirement, operation, network } = result;
+  const target = formatNumber(requirement.targetPowerFactor, 'given');
+  const count = countDuties(result.duties);
+  const factor = (value: number | null) => formatQuantity(value, '');
+  const lowest = operation.months.flatMap(({ powerFactorLagging: value }) => (value === null ? [] : [value]));
+  const lines = [
+    plainName(site.name),
+    `Proposed: ${proposedWords(outcome)}`,
+    `Verdict: ${verdictWords(result.verdict)}. ${NO_PERMISSION}`,
     '',
-    ...recordLines(result.record),
-    ...requirementLines(result.requirement),
-    ...operationLines(result),
-    ...networkLines(result),
-    ...dutyLines(result),
-    ...remarkLines('reasons', result.reasons),
-    ...remarkLines('assumptions', result.assumptions),
-    ...remarkLines('cautions', result.cautions),
-  ]);
+    ...recordLines(result.record, zone),
+    row(
+      `needed for ${target}`,
+      `at most ${formatQuantity(requirement.maxKvar, 'kvar')}, 99 % of the time under ${formatQuantity(requirement.p99Kvar, 'kvar')}`,
+    ),
+    row(
+      'lowest month',
+      `${factor(lowestOf(requirement.months.map((month) => month.powerFactorLagging)))} before, ${factor(lowestOf(lowest))} after`,
+    ),
+    row(
+      'set point',
+      `${formatNumber(result.control.setPointPowerFactor, 'given')}, reconnection delay ${formatQuantity(result.control.reconnectDelayS, 's', 'given')}`,
+    ),
+    row('switchings', formatNumber(operation.totalSwitchings, 'whole')),
+    row(
+      'fault level at the bus',
+      `${formatQuantity(network.shortCircuitMva, 'MVA')}, ${formatQuantity(network.shortCircuitMinMva, 'MVA')} at the least`,
+    ),
+    row(
+      'rows judged',
+      `${count.judged}: ${count.clear} within limits, ${count.watch} near a limit, ${count.avoid} over; ${count.notJudged} not judged`,
+    ),
+    '',
+    ...dutyLines(outcome),
+    ...reasonLines(outcome),
+  ];
+  return finished(lines);
 }
 
 /**
- * A scan for a terminal: the largest peak at each corner; the curves are in the JSON.
- * @param levels one entry a corner
- * @returns lines with a final break
+ * What a meter file holds, for a terminal.
+ * @param summary of the record
+ * @param zone the clock of its stamps; UTC where none is known
+ * @returns lines of plain text, ending in a line end
+ */
+export function recordReport(summary: RecordSummary, zone: ZoneTable = UTC_TABLE): string {
+  const notes = summary.notes.flatMap((note) => wrapped(`note: ${remarkSentence(note)}`, '  '));
+  return finished([...recordLines(summary, zone), ...notes]);
+}
+
+/**
+ * The scan of one level in every corner, for a terminal.
+ * @param levels one entry a corner, nominal first
+ * @returns a table of plain text, ending in a line end
  */
 export function scanReport(levels: readonly ScannedLevel[]): string {
-  const level = formatQuantity(levels[0]?.levelKvar ?? 0, 'kvar', 'answer');
+  const first = levels[0];
+  if (first === undefined) return '';
+  const head = ['fault level', 'capacitance', 'inductance', 'damping', 'peak at order', 'peak'];
   const rows = levels.map(({ corner, parallelOrderH, peakOhm }) => [
     formatQuantity(corner.faultLevelMva, 'MVA', 'given'),
-    formatNumber(corner.capacitanceFactor, 'given'),
-    formatNumber(corner.inductanceFactor, 'given'),
-    formatQuantity(corner.dampingKw, 'kW', 'given'),
-    parallelOrderH === null ? 'none' : formatNumber(parallelOrderH, 'answer'),
-    formatQuantity(peakOhm, 'Ω', 'answer'),
+    `× ${formatNumber(corner.capacitanceFactor, 'given')}`,
+    `× ${formatNumber(corner.inductanceFactor, 'given')}`,
+    formatQuantity(corner.dampingKw, 'kW'),
+    formatQuantity(parallelOrderH, ''),
+    formatQuantity(peakOhm, 'Ω'),
   ]);
-  const heads = ['fault level', 'capacitance', 'inductance', 'damping', 'parallel order', 'peak'];
-  return lines([
-    `impedance at the bus with ${level} connected, nominal and every corner`,
-    '',
-    ...tableLines([heads, ...rows]),
+  const widths = head.map((text, at) => Math.max(text.length, ...rows.map((cells) => cells[at]!.length)));
+  const line = (cells: readonly string[]) => cells.map((cell, at) => cell.padStart(widths[at]!)).join('  ');
+  return finished([
+    `Impedance at the bus with ${formatQuantity(first.levelKvar, 'kvar')} connected; the first row is the nominal case.`,
+    line(head),
+    ...rows.map(line),
   ]);
 }
 
-/** What a scan says of one corner, apart from its curve. */
-type ScannedLevel = Pick<NetworkLevel, 'levelKvar' | 'corner' | 'parallelOrderH' | 'peakOhm'>;
-
-function recordLines(record: RecordSummary): string[] {
-  const { intervals, intervalS, missing, repaired, duplicates } = record;
-  const counts = `${missing} missing, ${repaired} repaired, ${duplicates} repeated`;
-  const from = formatMoment(UTC_TABLE, record.beginS);
-  const to = formatMoment(UTC_TABLE, record.endS);
+function recordLines(record: RecordSummary, zone: ZoneTable): string[] {
+  const left = [
+    `${formatNumber(record.missing, 'whole')} missing`,
+    `${formatNumber(record.repaired, 'whole')} repaired`,
+  ];
   return [
-    entry('record', `${from} to ${to} UTC`),
-    entry('', `${formatNumber(intervals, 'whole')} intervals of ${formatLength(intervalS)}; ${counts}`),
-    entry(
-      '',
-      `${energy(record)}; power factor ${factor(record.powerFactorLagging)}, net ${factor(record.powerFactorNet)}`,
+    row(
+      'record',
+      `${formatMoment(zone, record.beginS)} to ${formatMoment(zone, record.endS)}, ${plainName(zone.zone)}`,
     ),
-    entry(
-      '',
-      `greatest ${formatQuantity(record.maxKw, 'kW', 'answer')}, ${formatQuantity(record.maxKva, 'kVA', 'answer')}`,
+    row(
+      'intervals',
+      `${formatNumber(record.intervals, 'whole')} of ${formatLength(record.intervalS)}, ${left.join(', ')}, ${formatNumber(record.duplicates, 'whole')} repeated`,
     ),
-    ...remarkLines('notes', record.notes),
-  ];
-}
-
-function requirementLines(requirement: RequirementSummary): string[] {
-  const { targetPowerFactor, maxKvar, p99Kvar, p50Kvar, intervalsInNeed } = requirement;
-  const [max, p99, p50] = [maxKvar, p99Kvar, p50Kvar].map((kvar) => formatQuantity(kvar, 'kvar'));
-  return [
-    entry('needed', `to ${formatNumber(targetPowerFactor, 'given')}: at most ${max}, P99 ${p99}, P50 ${p50}`),
-    entry('', `in ${formatNumber(intervalsInNeed, 'whole')} intervals`),
-  ];
-}
-
-function operationLines({ control, operation }: Result): string[] {
-  const setPoint = formatNumber(control.setPointPowerFactor, 'given');
-  const least = Math.min(...operation.months.map((month) => month.powerFactorLagging ?? 1));
-  return [
-    entry('control', `set point ${setPoint}, reconnection delay ${formatLength(control.reconnectDelayS)}`),
-    entry(
-      'in operation',
-      `inside the target ${formatQuantity(operation.shareInTargetPct, '%')} of the time, least monthly factor ${factor(least)}`,
+    row(
+      'energy',
+      `${formatNumber(record.activeKwh)}${GAP}kWh, ${formatNumber(record.laggingKvarh)}${GAP}kvarh lagging, ${formatNumber(record.leadingKvarh)}${GAP}kvarh leading`,
     ),
-    entry('', `${energy(operation)}; ${formatNumber(operation.totalSwitchings, 'whole')} switchings`),
+    row(
+      'power factor',
+      `${formatQuantity(record.powerFactorLagging, '')} lagging only, ${formatQuantity(record.powerFactorNet, '')} net`,
+    ),
+    row('greatest demand', `${formatQuantity(record.maxKw, 'kW')}, ${formatQuantity(record.maxKva, 'kVA')}`),
   ];
 }
 
-function networkLines({ network }: Result): string[] {
-  const distortionPct = Math.max(0, ...network.levels.map((level) => level.voltageDistortionPct));
-  const faults = [network.shortCircuitMva, network.shortCircuitMinMva].map((mva) => formatQuantity(mva, 'MVA'));
-  return [
-    entry('network', `fault level at the bus ${faults[0]}, at least ${faults[1]}`),
-    entry('', `voltage distortion at most ${formatQuantity(distortionPct, '%')}`),
-  ];
-}
-
-function dutyLines({ duties }: Result): string[] {
-  if (duties.length === 0) return [];
-  const rows = duties.map(({ name, group, value, limit, unit, verdict }) => {
-    const apart = limit === null ? { value: formatNumber(value), limit: '–' } : formatApart(value, limit);
-    return [
-      group === null ? name : `${name}, group ${group + 1}`,
-      apart.value,
-      apart.limit,
-      unit,
-      verdictWords(verdict),
-    ];
+function dutyLines({ result }: Outcome): string[] {
+  if (result.duties.length === 0) return [];
+  const rows = result.duties.map((duty) => {
+    const apart = duty.limit === null ? null : formatApart(duty.value, duty.limit);
+    const value = apart === null ? formatNumber(duty.value) : apart.value;
+    const limit = apart === null ? '–' : `${apart.limit}${GAP}${duty.unit}`;
+    return [dutyName(duty), `${value}${GAP}${duty.unit}`, limit, verdictWords(duty.verdict)];
   });
-  return ['', ...tableLines([['duty', 'value', 'limit', '', 'verdict'], ...rows])];
-}
-
-function remarkLines(heading: string, remarks: readonly Remark[]): string[] {
-  return remarks.map((remark, index) => entry(index === 0 ? heading : '', remark.text));
-}
-
-function bankWords({ effectiveKvar, stages }: BankSummary): string {
-  if (stages.length === 0) return 'no bank';
-  const kinds = new Map<string, number>();
-  for (const { ratedKvar, ratedV, reactorPct } of stages) {
-    const reactor = reactorPct === 0 ? '' : `, ${formatQuantity(reactorPct, '%', 'given')} reactor`;
-    const rating = `${formatQuantity(ratedKvar, 'kvar', 'given')} at ${formatQuantity(ratedV, 'V', 'given')}${reactor}`;
-    kinds.set(rating, (kinds.get(rating) ?? 0) + 1);
-  }
-  const groups = [...kinds].map(([rating, count]) => `${count} × ${rating}`);
-  return `${groups.join(' + ')} = ${formatQuantity(effectiveKvar, 'kvar', 'answer')} effective`;
-}
-
-function energy(part: { activeKwh?: number; laggingKvarh: number; leadingKvarh: number }): string {
-  const active = part.activeKwh === undefined ? '' : `${formatQuantity(part.activeKwh, 'kWh', 'answer')}, `;
-  const lagging = formatQuantity(part.laggingKvarh, 'kvarh', 'answer');
-  return `${active}${lagging} lagging, ${formatQuantity(part.leadingKvarh, 'kvarh', 'answer')} leading`;
-}
-
-function factor(value: number | null): string {
-  return value === null ? '–' : formatNumber(value);
-}
-
-function entry(heading: string, text: string): string {
-  return `${heading.padEnd(HEADING)}${text}`;
-}
-
-/** Columns as wide as their widest cell, numbers and words alike to the left. */
-function tableLines(rows: string[][]): string[] {
-  const widths = (rows[0] ?? []).map((_, column) => Math.max(...rows.map((row) => row[column]?.length ?? 0)));
-  return rows.map((row) =>
-    row
-      .map((cell, column) => cell.padEnd(widths[column] ?? 0))
-      .join('  ')
-      .trimEnd(),
+  const widths = [0, 1, 2].map((at) => Math.max(...rows.map((cells) => cells[at]!.length)));
+  const lines = rows.map(
+    ([name, value, limit, verdict]) =>
+      `${name!.padEnd(widths[0]!)}  ${value!.padStart(widths[1]!)} of ${limit!.padStart(widths[2]!)}  ${verdict}`,
   );
+  return [...lines, ''];
 }
 
-function lines(parts: string[]): string {
-  return `${parts.map((part) => part.trimEnd()).join('\n')}\n`;
+function reasonLines({ result }: Outcome): string[] {
+  return result.reasons.flatMap((reason) => {
+    const consequence = remarkConsequence(reason);
+    return wrapped(`- ${remarkSentence(reason)}${consequence === '' ? '' : ` ${consequence}`}`, '  ');
+  });
+}
+
+function lowestOf(values: readonly (number | null)[]): number | null {
+  const known = values.filter((value) => value !== null);
+  return known.length === 0 ? null : Math.min(...known);
+}
+
+function row(label: string, text: string): string {
+  return `${label.padEnd(LABEL_WIDTH)}${text}`;
+}
+
+function wrapped(text: string, indent: string): string[] {
+  const lines: string[] = [];
+  let line = '';
+  for (const word of text.split(' ')) {
+    if (line !== '' && line.length + 1 + word.length > LINE_WIDTH) {
+      lines.push(line);
+      line = `${indent}${word}`;
+    } else line = line === '' ? word : `${line} ${word}`;
+  }
+  return [...lines, line];
+}
+
+function finished(lines: readonly string[]): string {
+  return `${lines.join('\n').trimEnd()}\n`;
 }
