@@ -37,8 +37,9 @@ async function tell(text: string): Promise<number> {
 }
 
 function endQuietly(error: Error & { code?: string }): void {
-  if (error.code !== 'EPIPE') throw error;
-  process.exit();
+  if (error.code === 'EPIPE') process.exit();
+  process.stderr.write(`fault: the answer can't be written: ${error.message}\n`);
+  process.exit(1);
 }
 
 async function interrupted(): Promise<void> {

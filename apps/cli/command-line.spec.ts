@@ -1,0 +1,77 @@
+import { describe, expect, it } from 'vitest';
+import { InputProblem } from '#libs/engine/index.js';
+import { readCommandLine } from './command-line.js';
+import { COMMANDS, helpOf, overview } from './commands.js';
+
+const plan = COMMANDS.plan!;
+
+function problemsOf(args: string[]) {
+  try {
+    readCommandLine('plan', plan, args);
+  } catch (error) {
+    if (error instanceof InputProblem) return error.problems;
+    throw error;
+  }
+  return [];
+}
+
+describe('the arguments of a command', () => {
+  it('may stand in any order, values after a blank or an equals sign', () => {
+    const line = readCommandLine('plan', plan, ['--json', '--load=load.csv', 'site.json', '--pdf', 'out.pdf']);
+    expect(line).toEqual({
+      command: 'plan',
+      operand: 'site.json',
+      values: new Map([
+        ['load', 'load.csv'],
+        ['pdf', 'out.pdf'],
+      ]),
+      flags: new Set(['json']),
+    });
+  });
+
+  it('may be "-" for standard input, once', () => {
+    expect(problemsOf(['-', '--load', 'load.csv'])).toEqual([]);
+    expect(problemsOf(['site.json', '--load', '-'])).toEqual([]);
+    expect(problemsOf(['-', '--load', '-'])).toEqual([
+      { code: 'usage', expected: '"-" for one file only', found: 'it 2 times' },
+    ]);
+  });
+
+  it.each([
+    ['no operand', [], 'one SITE', 'none'],
+    ['two operands', ['a', 'b'], 'one SITE', 'a b'],
+    ['an option without its value', ['a', '--load'], '--load METER-FILE', 'no value'],
+    ['an option with an empty value', ['a', '--load='], '--load METER-FILE', 'no value'],
+    ['a flag with a value', ['a', '--json=yes'], '--json without a value', '"yes"'],
+    ['an option twice', ['a', '--load', 'b', '--load', 'c'], '--load once', 'it twice'],
+    ['a proposal on standard output', ['a', '--pdf', '-'], '--pdf with the name of a file', '"-"'],
+    [
+      'an unknown option',
+      ['a', '--lod', '--json'],
+      'one of --load, --pdf, --format, --map, --time-zone, --json',
+      '--lod',
+    ],
+    ['a short option', ['a', '-j'], 'one of --load, --pdf, --format, --map, --time-zone, --json', '-j'],
+    [
+      'a name of the language',
+      ['a', '--constructor'],
+      'one of --load, --pdf, --format, --map, --time-zone, --json',
+      '--constructor',
+    ],
+  ])('with %s are refused, naming it', (_what, args, expected, found) => {
+    expect(problemsOf(args)).toEqual([{ code: 'usage', expected, found }]);
+  });
+
+  it('are refused with everything that is wrong at once', () => {
+    expect(problemsOf(['--lod', 'x', 'y', '--json=1'])).toHaveLength(3);
+  });
+});
+
+describe('the help', () => {
+  it('names every command, and every option of each', () => {
+    for (const [name, { values, flags }] of Object.entries(COMMANDS)) {
+      expect(overview()).toContain(name);
+      for (const option of [...Object.keys(values), ...flags]) expect(helpOf(name)).toContain(`--${option} `);
+    }
+  });
+});
