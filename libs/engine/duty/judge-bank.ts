@@ -66,7 +66,7 @@ export function judgeBank(model: NetworkModel, bank: Bank, levels: Level[], basi
   const tables = bankModel(model, bank, levels);
   const collector = new LevelCollector(model);
   const empty = summarizeNetwork(model, []);
-  const networkUnknown = basis.loads.distorting === null || basis.loads.backgroundPct === null;
+  const networkUnknown = networkIsUnknown(basis.loads);
   const limits = networkLimits({ ...basis, ...basis.voltages, ...empty, loadA: model.loadA });
   const stages = bank.groups.map((_, g) => new StageDuties(model, bank, g, basis));
   const bankDuties = new NetworkDuties(model, limits, !networkUnknown);
@@ -116,7 +116,15 @@ function dischargeDuty(bank: Bank, charge: ChargeStage, rules: RuleSet): Duty[] 
   return [row.duty()!];
 }
 
-function inrushDuty(bank: Bank, inrush: InrushStage, rules: RuleSet): Duty[] {
+/**
+ * The inrush row of a group, where it has a limit.
+ * @param bank the bank
+ * @param inrush its closed forms
+ * @param rules rule set
+ * @returns one row or none
+ * @source method-limits
+ */
+export function inrushDuty(bank: Bank, inrush: InrushStage, rules: RuleSet): Duty[] {
   if (inrush.limitPeakA === null) return [];
   const peakA = Math.max(inrush.singlePeakA, inrush.ontoBankPeakA ?? 0);
   const limitA = inrush.limitPeakA;
@@ -129,10 +137,27 @@ function inrushDuty(bank: Bank, inrush: InrushStage, rules: RuleSet): Duty[] {
   return [duty.verdict === 'avoid' && assumed ? { ...duty, verdict: 'watch' } : duty];
 }
 
-function plainSharePct(bank: Bank, basis: JudgeBasis): number | null {
+/**
+ * Distorting load as a share of transformer rating, where plain stages meet more than is customary.
+ * @param bank the bank
+ * @param basis supply, loads, voltage
+ * @returns share [%], or null
+ * @source method-limits
+ */
+export function plainSharePct(bank: Bank, basis: JudgeBasis): number | null {
   const ratedKva = basis.supply.transformers.reduce((sum, t) => sum + t.ratedKva, 0);
   if (ratedKva === 0 || !bank.groups.some((group) => group.reactorPct === 0 && group.count > 0)) return null;
   const distortingA = (basis.loads.distorting ?? []).reduce((sum, load) => sum + load.fundamentalA, 0);
   const sharePct = (100 * Math.sqrt(3) * basis.voltages.nominalV * distortingA) / 1000 / ratedKva;
   return sharePct > PLAIN_SHARE_PCT ? sharePct : null;
+}
+
+/**
+ * Are the distorting loads or the background unknown; an empty list is a declaration, an absent one is not.
+ * @param loads settled loads
+ * @returns true where the network can't be judged
+ * @source method-limits
+ */
+export function networkIsUnknown(loads: Loads): boolean {
+  return loads.distorting === null || loads.backgroundPct === null;
 }

@@ -59,7 +59,8 @@ export function bankModel(model: NetworkModel, bank: Bank, levels: Level[]): Ban
 /**
  * Visits the flow of every level, corner and count vector, in that order of nesting.
  * Z = 1/(Y₀ + Y_bank); from the loads V = |Z|·I, source current |Z/Z_s|·I; from the background E behind the source
- * V = |E·Z/Z_s|, source current |E·(1 − Z/Z_s)/Z_s|; each pair combined with the order's exponent.
+ * V = |E·Z/Z_s|, source current |E·(1 − Z/Z_s)/Z_s|; each pair combined with the order's exponent. |Z| stands before
+ * both voltages, so they are combined once, as currents I and E/|Z_s|.
  * @param model the network without the bank
  * @param bank the bank's admittances
  * @param visit called with one flow object that is reused
@@ -97,6 +98,7 @@ export function eachFlow(model: NetworkModel, bank: BankModel, visit: (flow: Flo
 function flowInto(model: NetworkModel, stages: readonly ComplexColumn[], flow: Flow): void {
   const { excitation, nominalV, loadA } = model;
   const table = model.atOrders[flow.corner.network]!;
+  const drive = model.drives[flow.corner.network]!;
   let voltageSquare = 0;
   let currentSquare = 0;
   for (let i = 0; i < excitation.ordersH.length; i++) {
@@ -108,29 +110,28 @@ function flowInto(model: NetworkModel, stages: readonly ComplexColumn[], flow: F
     }
     const yRe = table.bus.re[i]! + bankRe;
     const yIm = table.bus.im[i]! + bankIm;
-    const zMagnitude = 1 / Math.hypot(yRe, yIm);
+    const zMagnitude = 1 / magnitude(yRe, yIm);
     const sRe = table.source.re[i]!;
     const sIm = table.source.im[i]!;
-    const sMagnitude = Math.hypot(sRe, sIm);
-    // 1 − Z/Z_s = (Z_s·Y − 1)/(Z_s·Y)
-    const zyRe = sRe * yRe - sIm * yIm;
-    const zyIm = sRe * yIm + sIm * yRe;
-    const share = zMagnitude / sMagnitude;
-    const remainder = Math.hypot(zyRe - 1, zyIm) * share;
-    const alpha = excitation.exponent[i]!;
-    const injected = excitation.injectedA[i]!;
-    const background = excitation.backgroundV[i]!;
-    const v = combine(zMagnitude * injected, background * share, alpha);
-    const source = combine(share * injected, (background * remainder) / sMagnitude, alpha);
+    // E·(1 − Z/Z_s)/Z_s = (Z/Z_s)·(E/Z_s)·(Z_s·Y − 1): the share Z/Z_s stands before both currents of the source.
+    const reaction = magnitude(sRe * yRe - sIm * yIm - 1, sRe * yIm + sIm * yRe);
+    const background = drive.backgroundA[i]! * reaction;
+    const v = zMagnitude * drive.equivalentA[i]!;
+    const source = (zMagnitude / drive.sourceOhm[i]!) * combine(excitation.injectedA[i]!, background, excitation.exponent[i]!);
     flow.voltageV[i] = v;
     flow.sourceA[i] = source;
-    flow.bankA[i] = v * Math.hypot(bankRe, bankIm);
+    flow.bankA[i] = v * magnitude(bankRe, bankIm);
     for (let g = 0; g < stages.length; g++) {
-      flow.stageA[g]![i] = v * Math.hypot(stages[g]!.re[i]!, stages[g]!.im[i]!);
+      flow.stageA[g]![i] = v * magnitude(stages[g]!.re[i]!, stages[g]!.im[i]!);
     }
     voltageSquare += v * v;
     currentSquare += source * source;
   }
   flow.voltageDistortionPct = (100 * Math.sqrt(voltageSquare)) / (nominalV / Math.sqrt(3));
   flow.currentDistortionPct = loadA > 0 ? (100 * Math.sqrt(currentSquare)) / loadA : 0;
+}
+
+// Math.hypot guards against overflow that impedances can't reach, and costs several times as much.
+function magnitude(re: number, im: number): number {
+  return Math.sqrt(re * re + im * im);
 }

@@ -1,4 +1,4 @@
-import { judgeBank, type Judgement } from '../duty/judge-bank.js';
+import { type JudgeBasis, type Judgement, judgeBank } from '../duty/judge-bank.js';
 import { marginMap } from '../duty/margin-map.js';
 import { CAPACITOR_RULES, graver, type Verdict } from '../duty/rules.js';
 import type { Bank } from '../layout/bank.js';
@@ -76,7 +76,13 @@ export function outcomeOf(
   };
 }
 
-function basisOf(study: Study, control: Control) {
+/**
+ * What a bank on this study is judged by.
+ * @param study site and record
+ * @param control settings
+ * @returns rules, voltages, supply, loads and delay
+ */
+export function basisOf(study: Study, control: Control): JudgeBasis {
   const { site } = study;
   return {
     rules: site.rules,

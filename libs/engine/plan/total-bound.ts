@@ -1,0 +1,44 @@
+import { tanFromPowerFactor } from '../quantity/power-factor.js';
+import { meterWithConstant, type Study } from './study.js';
+
+/** The bound is narrowed until its bracket is this wide [kvar]. */
+const BOUND_WIDTH_KVAR = 1e-3;
+
+/**
+ * Least effective total that could meet the target in every billing month, whatever the controller does.
+ * With at most t connected an interval's lagging kvar at the meter are no fewer than with t connected throughout, and
+ * its active power no more than the greater of none and t connected (the transformer's loss is convex in the kvar).
+ * @param study site and record
+ * @param mostKvar largest total of the candidates [kvar]
+ * @returns lower bound [kvar], or null where even `mostKvar` could not
+ * @source derived
+ */
+export function leastTotalKvar(study: Study, mostKvar: number): number | null {
+  const couldMeet = bound(study);
+  if (!couldMeet(mostKvar)) return null;
+  let low = 0;
+  let high = mostKvar;
+  while (high - low > BOUND_WIDTH_KVAR) {
+    const middle = (low + high) / 2;
+    if (couldMeet(middle)) high = middle;
+    else low = middle;
+  }
+  return low;
+}
+
+function bound(study: Study): (totalKvar: number) => boolean {
+  const tan = tanFromPowerFactor(study.site.targetPowerFactor);
+  const withoutKw = meterWithConstant(study, 0).activeKw;
+  return (totalKvar) => {
+    const meter = meterWithConstant(study, totalKvar);
+    const excess = new Float64Array(study.months.names.length);
+    const energy = new Float64Array(study.months.names.length);
+    for (let i = 0; i < withoutKw.length; i++) {
+      const month = study.months.ofInterval[i]!;
+      const kw = Math.max(0, withoutKw[i]!, meter.activeKw[i]!);
+      energy[month]! += kw;
+      excess[month]! += meter.laggingKvar[i]! - kw * tan;
+    }
+    return excess.every((kvar, month) => kvar <= 1e-9 * (1 + energy[month]!) || energy[month] === 0);
+  };
+}
