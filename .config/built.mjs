@@ -19,7 +19,7 @@ import { fileURLToPath, pathToFileURL } from 'node:url';
 const root = fileURLToPath(new URL('..', import.meta.url));
 const dist = join(root, 'dist');
 const stampFile = join(dist, '.built');
-const lockFile = join(root, 'node_modules', '.varwright-build');
+const lockFile = join(dist, '.building');
 const sourceFolders = ['apps/server', 'apps/cli', 'libs', 'migrations'];
 const settings = ['package.json', 'tsconfig.json', '.config/tsconfig.build.json'];
 
@@ -110,6 +110,7 @@ function removeOrphans() {
 
 /** Two commands started at once build one after the other; the second then finds the work done. */
 function takeLock() {
+  mkdirSync(dist, { recursive: true });
   const nap = new Int32Array(new SharedArrayBuffer(4));
   for (;;) {
     try {
