@@ -1,5 +1,5 @@
 import { assessBank } from '#libs/engine/index.js';
-import type { CommandLine } from './command-line.js';
+import type { CommandLine } from './command.js';
 import { judgeSite } from './judge-site.js';
 
 /** `assess SITE --load METER-FILE`: judges the site's own bank. */

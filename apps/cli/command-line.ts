@@ -1,14 +1,6 @@
 import { parseArgs } from 'node:util';
 import { InputProblem, type Problem } from '#libs/engine/index.js';
-import type { Command } from './commands.js';
-
-/** What was typed after the command's name. */
-export interface CommandLine {
-  command: string;
-  operand: string;
-  values: Map<string, string>;
-  flags: Set<string>;
-}
+import type { Command, CommandLine } from './command.js';
 
 /** Standard input stands for one file only. */
 export const STDIN = '-';

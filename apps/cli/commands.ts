@@ -1,18 +1,4 @@
-import type { CommandLine } from './command-line.js';
-
-/** How a command is called and where it stands. */
-export interface Command {
-  /** what its one operand is */
-  operand: string;
-  /** options that take a value, with a word for it */
-  values: Record<string, string>;
-  /** options that don't */
-  flags: readonly string[];
-  /** one line */
-  does: string;
-  details: string;
-  load(): Promise<{ run(line: CommandLine): Promise<number> }>;
-}
+import type { Command } from './command.js';
 
 const METER_OPTIONS = { format: 'FORMAT', map: 'FILE', 'time-zone': 'ZONE' };
 

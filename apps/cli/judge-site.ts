@@ -16,7 +16,8 @@ import {
 } from '#libs/engine/index.js';
 import { putInWords } from '#libs/present/put-in-words.js';
 import { resultReport } from '#libs/present/terminal-report.js';
-import { type CommandLine, usage } from './command-line.js';
+import type { CommandLine } from './command.js';
+import { usage } from './command-line.js';
 import { readJson } from './input-file.js';
 import { readMeterRecord } from './meter-record.js';
 import { say, write, writeJson } from './output.js';

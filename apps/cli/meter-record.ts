@@ -1,7 +1,7 @@
 import { readMeterMap } from '#libs/contract/meter-map-schema.js';
 import type { MeterReading } from '#libs/meter-files/meter-format.js';
 import { readMeterFile } from '#libs/meter-files/read-meter-file.js';
-import type { CommandLine } from './command-line.js';
+import type { CommandLine } from './command.js';
 import { openInput, readJson } from './input-file.js';
 import { inFile } from './refused-file.js';
 

@@ -1,5 +1,5 @@
 import { planBank } from '#libs/engine/index.js';
-import type { CommandLine } from './command-line.js';
+import type { CommandLine } from './command.js';
 import { judgeSite } from './judge-site.js';
 
 /** `plan SITE --load METER-FILE`: designs a bank and judges it. */

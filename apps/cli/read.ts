@@ -4,7 +4,8 @@ import { recordColumns } from '#libs/meter-files/record-columns.js';
 import { writeRecordCsv } from '#libs/meter-files/write-record-csv.js';
 import { recordInWords } from '#libs/present/put-in-words.js';
 import { recordReport } from '#libs/present/terminal-report.js';
-import { type CommandLine, usage } from './command-line.js';
+import type { CommandLine } from './command.js';
+import { usage } from './command-line.js';
 import { readMeterRecord } from './meter-record.js';
 import { write, writeJson } from './output.js';
 

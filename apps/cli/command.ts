@@ -1,0 +1,22 @@
+/** What was typed after the program's name. */
+export interface CommandLine {
+  command: string;
+  operand: string;
+  values: Map<string, string>;
+  flags: Set<string>;
+}
+
+/** How a command is called and where it stands. */
+export interface Command {
+  /** what its one operand is */
+  operand: string;
+  /** options that take a value, with a word for it */
+  values: Record<string, string>;
+  /** options that don't */
+  flags: readonly string[];
+  /** one line */
+  does: string;
+  details: string;
+  /** The command's own file, loaded when it is called; `run` gives the exit code. */
+  load(): Promise<{ run(line: CommandLine): Promise<number> }>;
+}
