@@ -59,12 +59,7 @@ export function dischargeMaxOhm(group: StageGroup, rules: RuleSet, frequencyHz: 
  * @returns one entry a group
  * @source iec-60831-1, nec-460
  */
-export function chargeStages(
-  bank: Bank,
-  rules: RuleSet,
-  frequencyHz: number,
-  reconnectDelayS: number,
-): ChargeStage[] {
+export function chargeStages(bank: Bank, rules: RuleSet, frequencyHz: number, reconnectDelayS: number): ChargeStage[] {
   const rule = CAPACITOR_RULES[rules];
   return bank.groups.map((group, index) => {
     const capacitanceUf = deltaCapacitanceUf(group, frequencyHz);

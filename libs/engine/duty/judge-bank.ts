@@ -129,7 +129,13 @@ export function inrushDuty(bank: Bank, inrush: InrushStage, rules: RuleSet): Dut
   const peakA = Math.max(inrush.singlePeakA, inrush.ontoBankPeakA ?? 0);
   const limitA = inrush.limitPeakA;
   const source = bank.groups[inrush.group]!.switchPeakA === limitA ? 'site' : CAPACITOR_RULES[rules].source;
-  const row = new DutyRow({ name: 'inrush current', group: inrush.group, unit: 'A', source, nearRatio: NEAR_RATIO.other });
+  const row = new DutyRow({
+    name: 'inrush current',
+    group: inrush.group,
+    unit: 'A',
+    source,
+    nearRatio: NEAR_RATIO.other,
+  });
   row.take(peakA, limitA, { levelKvar: null, corner: null, orderH: null });
   const duty = row.duty()!;
   // Over the limit only because of a customary inductance between stages: reactors or an inrush-limiting switch are due.

@@ -117,7 +117,8 @@ function flowInto(model: NetworkModel, stages: readonly ComplexColumn[], flow: F
     const reaction = magnitude(sRe * yRe - sIm * yIm - 1, sRe * yIm + sIm * yRe);
     const background = drive.backgroundA[i]! * reaction;
     const v = zMagnitude * drive.equivalentA[i]!;
-    const source = (zMagnitude / drive.sourceOhm[i]!) * combine(excitation.injectedA[i]!, background, excitation.exponent[i]!);
+    const source =
+      (zMagnitude / drive.sourceOhm[i]!) * combine(excitation.injectedA[i]!, background, excitation.exponent[i]!);
     flow.voltageV[i] = v;
     flow.sourceA[i] = source;
     flow.bankA[i] = v * magnitude(bankRe, bankIm);

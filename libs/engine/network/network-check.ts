@@ -1,8 +1,8 @@
+import { type SupplyPath, shortCircuitMva } from '../supply/supply-path.js';
 import type { Corner } from './corners.js';
 import type { BankModel, Flow } from './flow.js';
 import type { NetworkModel } from './network-model.js';
 import type { PeakFinder } from './peaks.js';
-import { shortCircuitMva, type SupplyPath } from '../supply/supply-path.js';
 
 /** Voltage and currents at one order. */
 export interface OrderResult {
@@ -126,28 +126,25 @@ export interface NearPeak {
  * @returns the nearest within reach, or null
  * @source method-limits
  */
-export function nearestPeak(
-  model: NetworkModel,
-  bank: BankModel,
-  finder: PeakFinder,
-  reachH: number,
-): NearPeak | null {
+export function nearestPeak(model: NetworkModel, bank: BankModel, finder: PeakFinder, reachH: number): NearPeak | null {
   let nearest: NearPeak | null = null;
-  let leastH = reachH;
   if (model.excitation.ordersH.length === 0) return null;
   for (const level of bank.levels.slice(1)) {
     for (const corner of model.corners.corners) {
       for (const { orderH } of level.vectors.flatMap((vector) => finder.peaks(vector, corner))) {
-        for (const presentOrderH of model.excitation.ordersH) {
-          const awayH = Math.abs(orderH - presentOrderH);
-          if (awayH > leastH || (nearest !== null && awayH >= leastH)) continue;
-          leastH = awayH;
-          nearest = { levelKvar: level.levelKvar, corner: corner.corner, peakOrderH: orderH, presentOrderH };
-        }
+        const presentOrderH = nearestOrder(model.excitation.ordersH, orderH);
+        const awayH = Math.abs(orderH - presentOrderH);
+        const leastH = nearest === null ? reachH : Math.abs(nearest.peakOrderH - nearest.presentOrderH);
+        if (awayH > leastH || (nearest !== null && awayH === leastH)) continue;
+        nearest = { levelKvar: level.levelKvar, corner: corner.corner, peakOrderH: orderH, presentOrderH };
       }
     }
   }
   return nearest;
+}
+
+function nearestOrder(ordersH: Float64Array, orderH: number): number {
+  return ordersH.reduce((best, h) => (Math.abs(h - orderH) < Math.abs(best - orderH) ? h : best));
 }
 
 /**
@@ -167,4 +164,3 @@ export function summarizeNetwork(model: NetworkModel, levels: NetworkLevel[]): N
     levels,
   };
 }
-

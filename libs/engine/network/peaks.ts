@@ -105,11 +105,7 @@ export class PeakFinder {
   }
 
   #table(grid: FactorGrid, network: number): NetworkTable {
-    grid.networks[network] ??= networkTable(
-      this.#model.corners.networks[network]!,
-      this.#model.damping,
-      grid.ordersH,
-    );
+    grid.networks[network] ??= networkTable(this.#model.corners.networks[network]!, this.#model.damping, grid.ordersH);
     return grid.networks[network];
   }
 

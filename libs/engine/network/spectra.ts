@@ -13,7 +13,10 @@ const TO_19 = [5, 7, 11, 13, 17, 19];
 
 /** Magnitudes in % of the fundamental current; each list's source stands in SOURCES.md. */
 export const SPECTRA: Record<SpectrumName, { source: string; orders: OrderPct[] }> = {
-  'six-pulse-ideal': { source: 'spectrum-ideal', orders: SIX_PULSE_ORDERS.map((orderH) => ({ orderH, pct: 100 / orderH })) },
+  'six-pulse-ideal': {
+    source: 'spectrum-ideal',
+    orders: SIX_PULSE_ORDERS.map((orderH) => ({ orderH, pct: 100 / orderH })),
+  },
   'six-pulse': { source: 'ieee-519-1992', orders: spectrum(TO_25, [17.5, 11.1, 4.5, 2.9, 1.5, 1.0, 0.9, 0.8]) },
   'drive-benchmark': {
     source: 'ieee-task-force-1999',

@@ -19,11 +19,7 @@ export interface StageBranch {
  * @returns the branch at the fundamental
  * @source method-network
  */
-export function stageBranch(
-  group: StageGroup,
-  factors: ToleranceFactors,
-  resistanceExponent: number,
-): StageBranch {
+export function stageBranch(group: StageGroup, factors: ToleranceFactors, resistanceExponent: number): StageBranch {
   const nominal = stageOhm(group);
   return {
     capacitiveOhm: nominal.capacitiveOhm / factors.capacitanceFactor,

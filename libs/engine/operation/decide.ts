@@ -120,7 +120,8 @@ export function oneByOneInto(bank: SwitchedBank, decision: Decision): void {
   let d = wantedKvar - bank.fixedKvar * voltageScale;
   for (let c = 0; c < chosen.length; c++) d -= chosen[c]! * bank.classes[c]!.kvar * voltageScale;
   for (let switchings = 0; switchings < decision.mostSwitchings; switchings++) {
-    const size = d > bandKvar ? sizeToConnect(bank, decision, d, tolerance) : sizeToDisconnect(bank, decision, d, tolerance);
+    const size =
+      d > bandKvar ? sizeToConnect(bank, decision, d, tolerance) : sizeToDisconnect(bank, decision, d, tolerance);
     if (size < 0) return;
     const step = d > bandKvar ? 1 : -1;
     chosen[size]! += step;

@@ -1,6 +1,6 @@
 import type { LoadRecord } from '../record/load-record.js';
-import { primaryFromBus } from '../supply/transformer-passage.js';
 import { type BusLoad, cannotCarry } from '../requirement/bus-load.js';
+import { primaryFromBus } from '../supply/transformer-passage.js';
 
 /** What the meter would have read with the bank; length n. */
 export interface MeterAfter {

@@ -194,32 +194,22 @@ function inrushFigures(study: Study, group: StageGroup, g: number, result: Resul
   const source = 'closed form after IEEE C37.99, an estimate';
   const stage = result.inrush.stages[g]!;
   const found = [
-    figure(
-      `inrush.stages[${g}].singlePeakA`,
-      { value: stage.singlePeakA, unit: 'A' },
-      { formula, source },
-      [
-        ['U', nominalV, 'V'],
-        ['X_c', own.capacitiveOhm, 'Ω'],
-        ['X_l', supplyOhm + own.inductiveOhm, 'Ω'],
-      ],
-    ),
+    figure(`inrush.stages[${g}].singlePeakA`, { value: stage.singlePeakA, unit: 'A' }, { formula, source }, [
+      ['U', nominalV, 'V'],
+      ['X_c', own.capacitiveOhm, 'Ω'],
+      ['X_l', supplyOhm + own.inductiveOhm, 'Ω'],
+    ]),
   ];
   if (stage.ontoBankPeakA === null || stage.ontoBankHz === null) return found;
   // Peak and frequency give back both reactances: X_c·X_l from the one, X_c/X_l from the other.
   const product = ((Math.SQRT2 * nominalV) / Math.sqrt(3) / stage.ontoBankPeakA) ** 2;
   const quotient = (stage.ontoBankHz / study.site.frequencyHz) ** 2;
   found.push(
-    figure(
-      `inrush.stages[${g}].ontoBankPeakA`,
-      { value: stage.ontoBankPeakA, unit: 'A' },
-      { formula, source },
-      [
-        ['U', nominalV, 'V'],
-        ['X_c', Math.sqrt(product * quotient), 'Ω'],
-        ['X_l', Math.sqrt(product / quotient), 'Ω'],
-      ],
-    ),
+    figure(`inrush.stages[${g}].ontoBankPeakA`, { value: stage.ontoBankPeakA, unit: 'A' }, { formula, source }, [
+      ['U', nominalV, 'V'],
+      ['X_c', Math.sqrt(product * quotient), 'Ω'],
+      ['X_l', Math.sqrt(product / quotient), 'Ω'],
+    ]),
   );
   return found;
 }

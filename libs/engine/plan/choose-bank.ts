@@ -1,6 +1,6 @@
+import { NEAR_RATIO } from '../duty/duty-row.js';
 import type { JudgeBasis } from '../duty/judge-bank.js';
 import { quickJudge } from '../duty/quick-judge.js';
-import { NEAR_RATIO } from '../duty/duty-row.js';
 import { CAPACITOR_RULES, graver, type Verdict } from '../duty/rules.js';
 import type { Bank } from '../layout/bank.js';
 import { bankOf, type Layout, layouts, preferred, type SettledCatalogue, type Sized } from '../layout/candidates.js';
@@ -65,6 +65,15 @@ class Chooser {
     const mostKvar = this.#mostKvar(layoutsLeft);
     const boundKvar = leastTotalKvar(this.#study, mostKvar);
     const reaching = boundKvar === null ? [] : this.#candidates(layoutsLeft, boundKvar);
+    const within = this.#preferredWithin(reaching);
+    if (within !== null) return within;
+    const all = this.#candidates(layoutsLeft, 0);
+    if (all.length === 0) return null;
+    return this.#nearest(all) ?? this.#despiteLimits(reaching.length > 0 ? reaching : all);
+  }
+
+  // The first that meets the target, does not over-correct and is clear; else the first that is `watch`.
+  #preferredWithin(reaching: readonly Candidate[]): Chosen | null {
     let watched: Chosen | null = null;
     for (const [k, candidate] of reaching.entries()) {
       this.#step(k / reaching.length);
@@ -75,10 +84,7 @@ class Chooser {
       if (verdict === 'clear') return this.#chosen(candidate, operated.control, null);
       if (verdict === 'watch') watched ??= this.#chosen(candidate, operated.control, 'onlyWatch');
     }
-    if (watched !== null) return watched;
-    const all = this.#candidates(layoutsLeft, 0);
-    if (all.length === 0) return null;
-    return this.#nearest(all) ?? this.#despiteLimits(reaching.length > 0 ? reaching : all);
+    return watched;
   }
 
   // No candidate is larger: every layout at the least voltage and the greatest reactor ratio.
@@ -109,22 +115,31 @@ class Chooser {
     for (const reactorPct of this.#catalogue.reactorPct) {
       const voltages = this.#catalogue.ratedV.filter((ratedV) => this.#carriesFundamental(ratedV, reactorPct));
       for (const layout of found) {
-        for (const ratedV of voltages) {
-          const bank = this.#bank(layout, ratedV, reactorPct);
-          const totalKvar = this.#totalKvar(bank);
-          if (totalKvar < boundKvar) break;
-          const smallestKvar = smallestStageKvar(this.#study, bank);
-          if (this.#tooLarge(totalKvar, smallestKvar, greatestKvar)) continue;
-          const quick = quickJudge(this.#study.model, bank, this.#basis(bank));
-          if (quick.voltages !== 'clear') continue;
-          const flows = this.#opened(quick.verdict);
-          const stages = layout.count + layout.halves;
-          candidates.push({ bank, flows, effectiveKvar: totalKvar, stages, smallestKvar, reactorPct });
-          break;
-        }
+        const bank = this.#atLeastVoltage(layout, reactorPct, { voltages, boundKvar, greatestKvar });
+        if (bank !== null) candidates.push(bank);
       }
     }
     return candidates.sort(preferred);
+  }
+
+  #atLeastVoltage(
+    layout: Layout,
+    reactorPct: number,
+    within: { voltages: readonly number[]; boundKvar: number; greatestKvar: number },
+  ): Candidate | null {
+    for (const ratedV of within.voltages) {
+      const bank = this.#bank(layout, ratedV, reactorPct);
+      const totalKvar = this.#totalKvar(bank);
+      if (totalKvar < within.boundKvar) return null;
+      const smallestKvar = smallestStageKvar(this.#study, bank);
+      if (this.#tooLarge(totalKvar, smallestKvar, within.greatestKvar)) continue;
+      const quick = quickJudge(this.#study.model, bank, this.#basis(bank));
+      if (quick.voltages !== 'clear') continue;
+      const stages = layout.count + layout.halves;
+      const flows = this.#opened(quick.verdict);
+      return { bank, flows, effectiveKvar: totalKvar, stages, smallestKvar, reactorPct };
+    }
+    return null;
   }
 
   // Fundamental voltage alone, in the corner of greatest p: a cheap necessary condition of clear voltage duties.
@@ -158,7 +173,8 @@ class Chooser {
     if (listed !== undefined) return [...listed].sort((a, b) => a - b);
     const { targetPowerFactor } = this.#study.site;
     const points = [targetPowerFactor];
-    for (let k = 1; targetPowerFactor + 0.01 * k < 1 - 1e-9; k++) points.push(Number((targetPowerFactor + 0.01 * k).toFixed(6)));
+    for (let k = 1; targetPowerFactor + 0.01 * k < 1 - 1e-9; k++)
+      points.push(Number((targetPowerFactor + 0.01 * k).toFixed(6)));
     if (targetPowerFactor < 1) points.push(1);
     return points;
   }

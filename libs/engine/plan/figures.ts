@@ -89,8 +89,18 @@ function requirementFigures(study: Study, result: Result): Figure[] {
 function supplyFigures(study: Study, result: Result): Figure[] {
   const { supply, nominalV } = study.site;
   const ends = [
-    { id: 'network.shortCircuitMva', fault: supply.faultLevelMva.max, end: 'least' as const, value: result.network.shortCircuitMva },
-    { id: 'network.shortCircuitMinMva', fault: supply.faultLevelMva.min, end: 'most' as const, value: result.network.shortCircuitMinMva },
+    {
+      id: 'network.shortCircuitMva',
+      fault: supply.faultLevelMva.max,
+      end: 'least' as const,
+      value: result.network.shortCircuitMva,
+    },
+    {
+      id: 'network.shortCircuitMinMva',
+      fault: supply.faultLevelMva.min,
+      end: 'most' as const,
+      value: result.network.shortCircuitMinMva,
+    },
   ];
   return ends.flatMap(({ id, fault, end, value }) => {
     const path = supplyPath(supply, nominalV, fault, end);

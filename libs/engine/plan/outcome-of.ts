@@ -3,6 +3,7 @@ import { marginMap } from '../duty/margin-map.js';
 import { CAPACITOR_RULES, graver, type Verdict } from '../duty/rules.js';
 import type { Bank } from '../layout/bank.js';
 import { bankLevels, summarizeBank } from '../layout/levels.js';
+import type { Control } from '../operation/control.js';
 import { summarizeOperation } from '../operation/operation.js';
 import type { Remark } from '../problem.js';
 import { cautions } from './cautions.js';
@@ -11,7 +12,6 @@ import type { Outcome, Rival } from './outcome.js';
 import { reasons } from './reasons.js';
 import type { Result } from './result.js';
 import { type Operated, operate, type Study } from './study.js';
-import type { Control } from '../operation/control.js';
 
 /** Reactor ratio of the comparison where the bank is plain [%]. */
 const RIVAL_REACTOR_PCT = 7;

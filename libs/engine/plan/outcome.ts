@@ -1,11 +1,11 @@
 import type { MarginMap } from '../duty/margin-map.js';
+import type { RuleSet } from '../duty/rules.js';
 import type { Bank } from '../layout/bank.js';
 import type { Loads } from '../network/loads.js';
 import type { LoadRecord } from '../record/load-record.js';
 import type { ZoneTable } from '../record/zone-table.js';
 import type { Supply } from '../supply/supply.js';
 import type { Result } from './result.js';
-import type { RuleSet } from '../duty/rules.js';
 import type { RecordedBank } from './site.js';
 
 /** The site with every default filled in. */

@@ -1,5 +1,5 @@
-import { settleCatalogue } from '../layout/candidates.js';
 import type { Bank } from '../layout/bank.js';
+import { settleCatalogue } from '../layout/candidates.js';
 import { meetsTarget, operationMonths } from '../operation/operation.js';
 import { type Remark, remark, type Watch } from '../problem.js';
 import type { LoadRecord } from '../record/load-record.js';

@@ -1,7 +1,7 @@
+import { naturalReconnectDelayS } from '../duty/charge.js';
 import type { Duty } from '../duty/duty-row.js';
 import type { Judgement } from '../duty/judge-bank.js';
 import { PEAK_REACH_H } from '../duty/judge-bank.js';
-import { naturalReconnectDelayS } from '../duty/charge.js';
 import type { Bank } from '../layout/bank.js';
 import { effectiveKvar } from '../layout/stage.js';
 import { meetsTarget } from '../operation/operation.js';

@@ -1,6 +1,6 @@
 import { bankLevels, type Level } from '../layout/levels.js';
-import type { Corner } from '../network/corners.js';
 import { networkTable } from '../network/bus-admittance.js';
+import type { Corner } from '../network/corners.js';
 import { networkModel } from '../network/network-model.js';
 import { PeakFinder } from '../network/peaks.js';
 import { admittanceSquareInto } from '../network/scan-into.js';
@@ -49,7 +49,9 @@ export function scanSite(
     levels: model.corners.corners.map((corner) => {
       const table = networkTable(model.corners.networks[corner.network]!, model.damping, options.ordersH);
       const factors = model.corners.factors[corner.factors]!;
-      const stages = bank.groups.map((group) => stageAdmittance(stageBranch(group, factors, exponent), options.ordersH));
+      const stages = bank.groups.map((group) =>
+        stageAdmittance(stageBranch(group, factors, exponent), options.ordersH),
+      );
       admittanceSquareInto(table.bus, stages, vector, square);
       const peak = finder.greatest(vector, corner);
       return {

@@ -59,7 +59,13 @@ function settleGroup(stage: StageGroupInput, g: number, context: GroupContext): 
   const reactorPct = reactorRatioPct(stage, path, context);
   if (!(reactorPct >= 0 && reactorPct < 100)) {
     throw new InputProblem([
-      { code: 'out-of-range', path: `${path}.reactorPct`, expected: '0 to below 100', found: `${reactorPct}`, unit: '%' },
+      {
+        code: 'out-of-range',
+        path: `${path}.reactorPct`,
+        expected: '0 to below 100',
+        found: `${reactorPct}`,
+        unit: '%',
+      },
     ]);
   }
   if (stage.reactorQuality === undefined && reactorPct > 0) {

@@ -1,7 +1,7 @@
+import type { Loads, LoadsInput } from '../network/loads.js';
 import { InputProblem, type Problem, type Remark, remark } from '../problem.js';
 import { compensatedSum } from '../quantity/compensated-sum.js';
 import type { LoadRecord } from '../record/load-record.js';
-import type { Loads, LoadsInput } from '../network/loads.js';
 import type { Supply, SupplyInput } from '../supply/supply.js';
 import type { SettledSite } from './outcome.js';
 import type { Site } from './site.js';
@@ -18,7 +18,8 @@ class Defaults {
 
   take<T extends number | string>(given: T | undefined, otherwise: T, path: string, unit?: string): T {
     if (given !== undefined) return given;
-    this.note(`default.${path}`, path, { value: otherwise }, unit);
+    // A member of a list keeps its own path; the code names the field alone, so that one sentence serves all.
+    this.note(`default.${path.replaceAll(/\[\d+\]/g, '')}`, path, { value: otherwise }, unit);
     return otherwise;
   }
 
@@ -117,20 +118,13 @@ function settleSupply(supply: SupplyInput, defaults: Defaults): Supply {
       return {
         ratedKva: transformer.ratedKva,
         impedancePct: transformer.impedancePct,
-        impedanceTolerancePct: takePart(defaults, transformer.impedanceTolerancePct, 10, part('impedanceTolerancePct'), '%'),
-        loadLossKw: takePart(defaults, transformer.loadLossKw, 0, part('loadLossKw'), 'kW'),
-        noLoadLossKw: takePart(defaults, transformer.noLoadLossKw, 0, part('noLoadLossKw'), 'kW'),
-        noLoadCurrentPct: takePart(defaults, transformer.noLoadCurrentPct, 0, part('noLoadCurrentPct'), '%'),
+        impedanceTolerancePct: defaults.take(transformer.impedanceTolerancePct, 10, part('impedanceTolerancePct'), '%'),
+        loadLossKw: defaults.take(transformer.loadLossKw, 0, part('loadLossKw'), 'kW'),
+        noLoadLossKw: defaults.take(transformer.noLoadLossKw, 0, part('noLoadLossKw'), 'kW'),
+        noLoadCurrentPct: defaults.take(transformer.noLoadCurrentPct, 0, part('noLoadCurrentPct'), '%'),
       };
     }),
   };
-}
-
-// A member of a list keeps its own path; the code names the field alone, so that one sentence serves all.
-function takePart(defaults: Defaults, given: number | undefined, otherwise: number, path: string, unit: string): number {
-  if (given !== undefined) return given;
-  defaults.note(`default.${path.replaceAll(/\[\d+\]/g, '')}`, path, { value: otherwise }, unit);
-  return otherwise;
 }
 
 function settleLoads(loads: LoadsInput | undefined, record: LoadRecord | null, defaults: Defaults): Loads {

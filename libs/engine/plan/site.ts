@@ -1,6 +1,6 @@
+import type { RuleSet } from '../duty/rules.js';
 import type { BankInput } from '../layout/bank.js';
 import type { CatalogueInput } from '../layout/catalogue.js';
-import type { RuleSet } from '../duty/rules.js';
 import type { Finance, PriceBook, Tariff } from '../money/papers.js';
 import type { LoadsInput } from '../network/loads.js';
 import type { Control } from '../operation/control.js';

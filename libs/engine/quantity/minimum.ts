@@ -39,6 +39,7 @@ export function goldenMinimum(f: (x: number) => number, low: number, high: numbe
  * @param f increasing on [low, high]
  * @param low f(low) ≤ 0
  * @param high f(high) ≥ 0
+ * @param width the bracket is narrowed until it is no wider than this
  * @returns the zero, to `width`
  * @source derived: halving keeps the sign change inside the bracket
  */

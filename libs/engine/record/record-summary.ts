@@ -1,7 +1,7 @@
+import type { Remark } from '../problem.js';
 import { Total } from '../quantity/compensated-sum.js';
 import { energyPowerFactor } from '../quantity/power-factor.js';
 import type { LoadRecord } from './load-record.js';
-import type { Remark } from '../problem.js';
 
 /** Statistics of the meter's own record. */
 export interface RecordSummary {

@@ -93,7 +93,6 @@ function requirementMonth(
     powerFactorLagging: energyPowerFactor(activeKwh, laggingKvarh),
     maxKw,
     neededKvar,
-    energyNeedKvar:
-      Math.max(0, laggingKvarh - activeKwh * tanFromPowerFactor(targetPowerFactor)) / (count * hours),
+    energyNeedKvar: Math.max(0, laggingKvarh - activeKwh * tanFromPowerFactor(targetPowerFactor)) / (count * hours),
   };
 }

@@ -72,12 +72,7 @@ export function transformerOhm(transformer: Required<Transformer>, nominalV: num
  * @returns series impedances, per phase at the bus voltage [Ω]
  * @source method-network
  */
-export function supplyPath(
-  supply: Supply,
-  nominalV: number,
-  faultLevelMva: number,
-  end: ToleranceEnd,
-): SupplyPath {
+export function supplyPath(supply: Supply, nominalV: number, faultLevelMva: number, end: ToleranceEnd): SupplyPath {
   return {
     source: networkOhm(faultLevelMva, nominalV, supply.rOverX),
     transformers: supply.transformers.map((transformer) => transformerOhm(transformer, nominalV, end)),
