@@ -127,20 +127,28 @@ export interface NearPeak {
  * @source method-limits
  */
 export function nearestPeak(model: NetworkModel, bank: BankModel, finder: PeakFinder, reachH: number): NearPeak | null {
-  let nearest: NearPeak | null = null;
   if (model.excitation.ordersH.length === 0) return null;
+  let nearest: NearPeak | null = null;
+  let leastH = Number.POSITIVE_INFINITY;
+  for (const peak of everyPeak(model, bank, finder)) {
+    const awayH = Math.abs(peak.peakOrderH - peak.presentOrderH);
+    if (awayH > reachH || awayH >= leastH) continue;
+    leastH = awayH;
+    nearest = peak;
+  }
+  return nearest;
+}
+
+// Levels above 0, corners, count vectors, in that order of nesting; each peak with the order present it is nearest to.
+function* everyPeak(model: NetworkModel, bank: BankModel, finder: PeakFinder): Generator<NearPeak> {
   for (const level of bank.levels.slice(1)) {
     for (const corner of model.corners.corners) {
       for (const { orderH } of level.vectors.flatMap((vector) => finder.peaks(vector, corner))) {
         const presentOrderH = nearestOrder(model.excitation.ordersH, orderH);
-        const awayH = Math.abs(orderH - presentOrderH);
-        const leastH = nearest === null ? reachH : Math.abs(nearest.peakOrderH - nearest.presentOrderH);
-        if (awayH > leastH || (nearest !== null && awayH === leastH)) continue;
-        nearest = { levelKvar: level.levelKvar, corner: corner.corner, peakOrderH: orderH, presentOrderH };
+        yield { levelKvar: level.levelKvar, corner: corner.corner, peakOrderH: orderH, presentOrderH };
       }
     }
   }
-  return nearest;
 }
 
 function nearestOrder(ordersH: Float64Array, orderH: number): number {

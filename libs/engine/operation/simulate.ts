@@ -133,25 +133,25 @@ class SwitchState {
   }
 
   #countFree(beginS: number): void {
-    const latestS = beginS - this.#control.reconnectDelayS;
+    const delayS = this.#control.reconnectDelayS;
     for (let c = 0; c < this.#bank.classes.length; c++) {
       const { stages } = this.#bank.classes[c]!;
       let free = 0;
       for (let k = 0; k < stages.length; k++) {
-        if (this.#on[stages[k]!] === 0 && this.#offSinceS[stages[k]!]! <= latestS) free++;
+        if (this.#on[stages[k]!] === 0 && beginS >= this.#offSinceS[stages[k]!]! + delayS) free++;
       }
       this.#decision.free[c] = free;
     }
   }
 
   #connectOne(c: number, beginS: number): void {
-    const latestS = beginS - this.#control.reconnectDelayS;
+    const delayS = this.#control.reconnectDelayS;
     const even = this.#control.wear === 'even';
     const { stages } = this.#bank.classes[c]!;
     let pick = -1;
     for (let k = 0; k < stages.length; k++) {
       const stage = stages[k]!;
-      if (this.#on[stage] !== 0 || this.#offSinceS[stage]! > latestS) continue;
+      if (this.#on[stage] !== 0 || beginS < this.#offSinceS[stage]! + delayS) continue;
       if (pick < 0 || (even && this.switchings[stage]! < this.switchings[pick]!)) pick = stage;
     }
     if (pick < 0) throw new Error('no free stage to connect');
