@@ -222,7 +222,7 @@ describe('a site file', () => {
         rules: 4,
         extra: 1,
         recordedBank: { state: 'on' },
-        bank: { stages: [{ count: 0.5, ratedKvar: 1, ratedV: 1 }] },
+        bank: { stages: [{ count: 0.5, ratedKvar: 1, ratedV: 480 }] },
       },
     );
     expect(problemsOf(json).map(({ path }) => path)).toEqual([
