@@ -162,7 +162,7 @@ describe('an answer', () => {
   it('of assess without --json is for a person: verdict, figures, cautions', () => {
     const { code, stdout, stderr } = work.run(['assess', work.file(site()), '--load', work.file(meterCsv(31), 'csv')]);
     expect(code).toBe(0);
-    expect(stdout).toMatch(/Invented Mill[^]*within limits/);
+    expect(stdout).toMatch(/Invented Mill[\s\S]*within limits/);
     expect(stdout).toContain('not permission to energise');
     expect(stderr).toBe('');
   });
