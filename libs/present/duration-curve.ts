@@ -37,7 +37,7 @@ export function durationCurve(outcome: Outcome): Chart {
     y: linearAxis('needed', 'kvar', { least: 0, most: Math.max(maxKvar, top) }),
     equalScales: false,
     series: [
-      { part: 'bank', shape: 'wash', x: share, y: reached },
+      { part: 'bank', shape: 'washStair', x: share, y: reached },
       {
         part: 'beyond',
         shape: 'hatch',

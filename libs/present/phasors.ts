@@ -39,8 +39,12 @@ export function phasors(outcome: Outcome): Chart {
       `Voltage U points right. The load’s current, ${amperes(before)}, ${angleWords(load)}. ` +
       `The capacitors’ current, ${amperes(moment.bankKvar * perKva)}, leads U by 90° and points up. ` +
       `Their sum, the supply’s current, is ${amperes(after)} and ${angleWords(sum)}.`,
-    x: linearAxis('in phase', 'A', { least: 0, most: reach.x * 1.05 }, 4),
-    y: linearAxis('lagging downwards', 'A', { least: reach.down, most: reach.up }, 4),
+    x: { ...linearAxis('in phase', 'A', { least: 0, most: reach.x }, 4), to: reach.x * 1.3 },
+    y: {
+      ...linearAxis('lagging downwards', 'A', { least: reach.down, most: reach.up }, 4),
+      from: reach.down * 1.12,
+      to: reach.up + 0.06 * reach.x,
+    },
     equalScales: true,
     series: [],
     marks: arrows(load, sum, moment.bankKvar * perKva),
@@ -82,34 +86,41 @@ function arrows(load: [number, number], sum: [number, number], bankA: number): M
     bank: label('bank', [load[0], (load[1] + sum[1]) / 2], bankA),
     sum: label('supply', sum, Math.hypot(...sum)),
   };
-  const marks: Mark[] = [{ kind: 'arrow', from: [0, 0], to: load, part: 'site' }];
+  const along = 1.2 * Math.max(Math.hypot(...load), Math.hypot(...sum), 1);
+  const marks: Mark[] = [
+    { kind: 'arrow', from: [0, 0], to: [along, 0], part: 'beyond' },
+    { kind: 'label', x: along, y: 0, text: 'U', side: 'right', part: 'beyond' },
+    { kind: 'arrow', from: [0, 0], to: load, part: 'site' },
+  ];
   if (bankA > 0) {
     marks.push({ kind: 'arrow', from: load, to: sum, part: 'bank' });
     marks.push({ kind: 'label', x: ends.bank.x, y: ends.bank.y, text: ends.bank.name, side: 'right', part: 'bank' });
     marks.push({ kind: 'arrow', from: [0, 0], to: sum, part: 'after' });
     marks.push({ kind: 'label', x: sum[0], y: sum[1], text: ends.sum.name, side: 'right', part: 'after' });
   }
-  marks.push({ kind: 'label', x: load[0], y: load[1], text: ends.load.name, side: 'below', part: 'site' });
+  marks.push({ kind: 'label', x: load[0], y: load[1], text: ends.load.name, side: 'left', part: 'site' });
   return marks;
 }
 
 function phasorTable(moment: Moment, ends: { load: [number, number]; sum: [number, number] }): Chart['table'] {
-  const row = (name: string, kw: number, kvar: number, amperes: number) => [
-    name,
-    formatNumber(kw),
-    formatNumber(kvar),
-    formatNumber(Math.hypot(kw, kvar)),
-    formatNumber(amperes),
-    Math.hypot(kw, kvar) > 0 ? formatNumber(Math.abs(kw) / Math.hypot(kw, kvar)) : '–',
-  ];
   const { kw, loadKvar, bankKvar } = moment;
-  const bankA = ends.sum[1] - ends.load[1];
+  const parts = [
+    { kw, kvar: loadKvar, amperes: Math.hypot(...ends.load) },
+    { kw: 0, kvar: -bankKvar, amperes: ends.sum[1] - ends.load[1] },
+    { kw, kvar: loadKvar - bankKvar, amperes: Math.hypot(...ends.sum) },
+  ];
+  const row = (name: string, value: (part: (typeof parts)[number]) => number | null) => [
+    name,
+    ...parts.map((part) => formatQuantity(value(part), '')),
+  ];
   return {
-    columns: ['', 'kW', 'kvar, lagging', 'kVA', 'A', 'cos φ'].map((head, at) => ({ head, right: at > 0 })),
+    columns: ['', 'load', 'bank', 'supply'].map((head, at) => ({ head, right: at > 0 })),
     rows: [
-      row('load', kw, loadKvar, Math.hypot(...ends.load)),
-      row('bank', 0, -bankKvar, bankA),
-      row('supply', kw, loadKvar - bankKvar, Math.hypot(...ends.sum)),
+      row('kW', (part) => part.kw),
+      row('kvar, lagging', (part) => part.kvar),
+      row('kVA', (part) => Math.hypot(part.kw, part.kvar)),
+      row('A', (part) => part.amperes),
+      row('cos φ', (part) => (part.kw === 0 ? null : Math.abs(part.kw) / Math.hypot(part.kw, part.kvar))),
     ],
   };
 }

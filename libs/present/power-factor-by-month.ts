@@ -32,7 +32,10 @@ export function powerFactorByMonth(outcome: Outcome): Chart {
       scale: 'linear',
       from: -0.5,
       to: months.length - 0.5,
-      ticks: months.map(({ month }, at) => ({ at, text: monthLetters(month) })),
+      ticks: months.map(({ month }, at) => ({
+        at,
+        text: months.length > 8 ? monthLetters(month)[0]! : monthLetters(month),
+      })),
     },
     y: factorAxis(Math.min(...known, target)),
     equalScales: false,

@@ -101,4 +101,29 @@ export const REASON_MESSAGES: Messages = {
     text: 'The stated reactor ratio, {statedPct}, disagrees with the nameplate’s capacitance and inductance, {derivedPct}, which was used.',
     consequence: 'Read the nameplates again.',
   },
+  'need.metEveryMonth': {
+    level: 'information',
+    text: 'Single intervals need up to {maxKvar}, and yet the target {targetPowerFactor} is met in every month without a bank.',
+    consequence: 'No bank is needed for the target.',
+  },
+  'layout.noCandidate': {
+    level: 'blocks issue',
+    text: 'The catalogue holds no bank that could be built for this site.',
+    consequence: 'Widen the list of sizes, voltages or reactor ratios, or the most stages.',
+  },
+  'layout.onlyWatch': {
+    level: 'to be accepted',
+    text: 'No bank of the catalogue meets the target with every limit clear of its threshold; the nearest is proposed.',
+    consequence: 'Accept what stands near a limit, or widen the catalogue.',
+  },
+  'layout.targetOutOfReach': {
+    level: 'to be accepted',
+    text: 'No bank of the catalogue meets the target in every month; the nearest is proposed.',
+    consequence: 'Allow more stages, larger ones or more kvar, or accept the months that stay short.',
+  },
+  'layout.onlyAvoid': {
+    level: 'blocks issue',
+    text: 'Every bank of the catalogue is over a limit; the nearest is shown.',
+    consequence: 'Widen the catalogue, or settle the distortion at its sources.',
+  },
 };

@@ -35,7 +35,8 @@ export interface SetDiagram {
  * @returns height and a function that draws it at a place
  */
 export function setSingleLine(paper: Paper, diagram: SingleLine, width: number): SetDiagram {
-  const above = diagram.transformers.length === 0 ? ABOVE_BUS - 36 : ABOVE_BUS;
+  const primary = diagram.meteredAt === 'primary' ? 11 : 0;
+  const above = (diagram.transformers.length === 0 ? ABOVE_BUS - 36 : ABOVE_BUS) + primary;
   const feeders = diagram.feeders.map((feeder) =>
     setFeeder(paper, feeder, (LOADS_SHARE * width) / diagram.feeders.length),
   );
@@ -82,9 +83,9 @@ function drawSupply(paper: Paper, diagram: SingleLine, { box, busY }: Place): vo
   const gridEnd = drawGrid(doc, { x, y: box.y });
   type.put([diagram.grid], ON_CHART, x + 13, box.y + 11);
   const shown = diagram.transformers.slice(0, MOST_TRANSFORMERS);
-  const tap = gridEnd + 9;
+  const tap = gridEnd + (diagram.meteredAt === 'primary' ? 20 : 9);
   drawConductor(doc, { x, y: gridEnd }, { x, y: tap });
-  if (diagram.meteredAt === 'primary') meterBeside(paper, { x, y: gridEnd + 6 });
+  if (diagram.meteredAt === 'primary') meterBeside(paper, { x, y: gridEnd + 9 });
   let y = tap;
   if (shown.length > 0) {
     const pitch = 30;
@@ -100,7 +101,7 @@ function drawSupply(paper: Paper, diagram: SingleLine, { box, busY }: Place): vo
       y = shown.length > 1 ? end + 4 : end;
     });
     if (shown.length > 1) drawConductor(doc, { x: first, y }, { x: last, y });
-    labelTransformers(paper, diagram, { x: last + 14, y: tap + 12 });
+    labelTransformers(paper, diagram, { x: last + 14, y: tap + 14 });
   }
   drawConductor(doc, { x, y }, { x, y: busY });
   drawBreaker(doc, { x, y: y + 5 });

@@ -1,0 +1,49 @@
+import type { Outcome } from '#libs/engine/index.js';
+import { basisOfDesign, RULE_SET_WORDS } from '#libs/present/basis-of-design.js';
+import { formatNumber, formatQuantity } from '#libs/present/format-number.js';
+import { plainName } from '#libs/present/plain-name.js';
+import { remarkConsequence } from '#libs/present/remark-words.js';
+import { NOTE, type Paper } from './paper.js';
+import { drawTable } from './table.js';
+
+/** Documents with their editions, and what each was used for. */
+export function drawBasis(paper: Paper, outcome: Outcome): void {
+  const { site } = outcome;
+  paper.heading('3', `Basis of design: ${RULE_SET_WORDS[site.rules]}`);
+  paper.paragraph([
+    `${formatQuantity(site.nominalV, 'V', 'given')}, at most ${formatQuantity(site.highestV, 'V', 'given')}, ` +
+      `${formatNumber(site.frequencyHz, 'given')} Hz. Target power factor ${formatNumber(site.targetPowerFactor, 'given')} ` +
+      `at the ${site.meteredAt === 'primary' ? 'transformer’s primary' : 'board'}, held in every billing month.`,
+  ]);
+  const columns = [
+    { head: 'rule', share: 28 },
+    { head: 'edition', share: 22 },
+    { head: 'used for', share: 50 },
+  ];
+  drawTable(
+    paper,
+    columns,
+    basisOfDesign(outcome).map(({ rule, edition, usedFor }) => [rule, edition, usedFor]),
+  );
+}
+
+/** Every value that was taken because none was given, and what settles it. */
+export function drawAssumptions(paper: Paper, outcome: Outcome): void {
+  const { assumptions } = outcome.result;
+  const count = assumptions.length;
+  paper.heading(
+    '4',
+    `Assumptions: ${count === 0 ? 'none' : `${count} ${count === 1 ? 'value was' : 'values were'} not given`}`,
+  );
+  if (count === 0) {
+    paper.paragraph(['Every value was given.']);
+    return;
+  }
+  const columns = [
+    { head: 'taken', share: 44 },
+    { head: 'field', share: 26 },
+    { head: 'what settles it', share: 34 },
+  ];
+  const rows = assumptions.map((one) => [one.text, plainName(one.path ?? ''), remarkConsequence(one)]);
+  drawTable(paper, columns, rows, { style: { ...NOTE, ink: '#000000', size: 9.2 } });
+}
