@@ -54,6 +54,7 @@ export function refuseUndeclared(routes: Route[], registered: Registered[]): voi
   const silent = routes.filter(({ declared }) => declared === undefined).map(({ handler }) => handler);
   const known = new Set(routes.filter(({ declared }) => declared).map(({ method, path }) => `${method} ${path}`));
   const strange = registered
+    .filter(({ path }) => !known.has(`ALL ${path}`))
     .filter(({ method, path }) => !known.has(`${method === 'HEAD' ? 'GET' : method} ${path}`))
     .map(({ method, path }) => `${method} ${path}`);
   const undeclared = [...silent, ...strange];

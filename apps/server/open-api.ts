@@ -1,8 +1,9 @@
 import type { INestApplication } from '@nestjs/common';
 import type { OpenAPIObject } from '@nestjs/swagger';
 import { routesOf } from './declared-routes.js';
+import { ANSWER_SCHEMAS, OPEN_API_PARTS } from './open-api-parts.js';
 
-type Operation = { summary?: string; responses: Record<string, object> };
+type Operation = { summary?: string; parameters?: object[]; requestBody?: object; responses: Record<string, object> };
 
 /** The description of the API, made from the routes when it is first asked for: its maker takes half a second to load. */
 export class OpenApi {
@@ -30,53 +31,23 @@ async function describeRoutes(app: INestApplication): Promise<OpenAPIObject> {
     .setVersion('1')
     .build();
   const document = SwaggerModule.createDocument(app, about);
-  document.components = { ...document.components, schemas: { ...document.components?.schemas, Problem: PROBLEM } };
+  document.components = { ...document.components, schemas: { ...document.components?.schemas, ...ANSWER_SCHEMAS } };
   for (const { method, path, declared } of routesOf(app)) {
     const template = path.replace(/:(\w+)/g, '{$1}');
     const item = document.paths[template] as Record<string, Operation> | undefined;
     const operation = item?.[method.toLowerCase()];
     if (operation === undefined) continue;
-    operation.summary = declared?.does ?? '';
-    operation.responses = { ...operation.responses, default: REFUSED };
+    const { parameters = [], responses, ...part } = OPEN_API_PARTS[`${method.toLowerCase()} ${template}`] ?? {};
+    Object.assign(operation, part, {
+      summary: declared?.does ?? '',
+      parameters: [...(operation.parameters ?? []), ...parameters],
+      responses: { ...(responses ?? operation.responses), default: REFUSED },
+    });
   }
   delete document.paths['/api/{path}'];
   delete document.paths['/api/*'];
   return document;
 }
-
-const text = { type: 'string' };
-
-const PROBLEM = {
-  type: 'object',
-  required: ['type', 'title', 'status', 'detail', 'code', 'problems'],
-  properties: {
-    type: text,
-    title: text,
-    status: { type: 'integer' },
-    detail: text,
-    code: text,
-    path: text,
-    row: { type: 'integer' },
-    column: { type: 'integer' },
-    problems: {
-      type: 'array',
-      items: {
-        type: 'object',
-        required: ['code', 'expected', 'found'],
-        properties: {
-          code: text,
-          path: text,
-          row: { type: 'integer' },
-          column: { type: 'integer' },
-          expected: text,
-          found: text,
-          unit: text,
-        },
-      },
-    },
-    questions: { type: 'array', items: { type: 'object' } },
-  },
-};
 
 const REFUSED = {
   description: 'An error, naming what is wrong and where.',

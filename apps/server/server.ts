@@ -70,7 +70,7 @@ export async function createServer(
   const store = await openStore(settings.dbUrl);
   const spool = new Spool(settings.spoolDir, settings.uploadBytes);
   await spool.prepare();
-  const pool = new WorkerPool(workerFile);
+  const pool = new WorkerPool(workerFile, (error) => log.fault(error));
   const runner = planRunner(store, pool);
   const jobs = new InProcessJobs({
     store,
@@ -116,7 +116,15 @@ async function serve(
   module: DynamicModule,
   { settings, log }: { settings: Settings; log: ServerLog },
 ): Promise<NestFastifyApplication> {
-  const adapter = new FastifyAdapter({ bodyLimit: 1_000_000, forceCloseConnections: 'idle', routerOptions: {} });
+  const adapter = new FastifyAdapter({
+    bodyLimit: 1_000_000,
+    forceCloseConnections: 'idle',
+    // An address that cannot be decoded never reaches a route, nor the filter.
+    frameworkErrors: (error, _request, reply) => {
+      const problem = describeError(error);
+      reply.status(problem.status).type('application/problem+json').send(JSON.stringify(problem));
+    },
+  });
   const registered: Registered[] = [];
   const fastify = adapter.getInstance() as unknown as FastifyInstance;
   fastify.addHook('onRoute', ({ method, url }) => {

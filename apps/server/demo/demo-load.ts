@@ -29,7 +29,7 @@ export function* demoLoad(): Generator<string> {
     const season = 1 + 0.05 * Math.cos((2 * Math.PI * (dayOfYear - 20)) / 365);
     const activeKw = (36 + 330 * running * season) * (1 + 0.6 * wander) + 6 * chance();
     // Half-loaded motors draw the worse power factor.
-    const tangent = 1.02 - 0.16 * running + 0.05 * (chance() - 0.5);
+    const tangent = 1.02 - 0.16 * running - 0.05 * (season - 1) * 20 * 0.8 + 0.05 * (chance() - 0.5);
     yield `${stamp(beginS)},${activeKw.toFixed(1)},${(activeKw * tangent).toFixed(1)}\n`;
   }
 }

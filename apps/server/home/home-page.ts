@@ -84,7 +84,7 @@ function keyFigures({ requirement, bank, record, operation, control }: Result): 
     ['the bank gives', formatNumber(bank.effectiveKvar), 'kvar'],
     ['power factor as recorded', factor(record.powerFactorLagging), ''],
     ['with the bank, worst month', factor(after.length === 0 ? null : Math.min(...after)), ''],
-    ['target, set point', `${requirement.targetPowerFactor}, ${control.setPointPowerFactor}`, ''],
+    ['target, set point', `${requirement.targetPowerFactor.toFixed(2)}, ${control.setPointPowerFactor.toFixed(2)}`, ''],
   ];
   const items = rows.map(
     ([name, value, unit]) =>

@@ -19,7 +19,7 @@ h2 { font-size: 16px; line-height: 20px; font-weight: 600; margin: 0; padding-to
 section { border-top: 1px solid var(--hair); margin-top: 24px; }
 p, ul { margin: 8px 0; }
 ul { padding-left: 20px; }
-a { color: inherit; text-decoration: none; border-bottom: 1px dotted currentcolor; display: inline-block; padding: 2px 0; }
+a { color: inherit; text-decoration: underline dotted; text-underline-offset: 4px; display: inline-block; padding: 2px 0; }
 a:focus-visible { outline: 3px solid var(--ink); outline-offset: 3px; }
 .soft { color: var(--soft); }
 .bank { color: var(--bank); }
@@ -29,18 +29,18 @@ a:focus-visible { outline: 3px solid var(--ink); outline-offset: 3px; }
 .avoid { background: var(--avoid-fill); color: var(--on-avoid); padding: 2px 8px; }
 .verdict.avoid { font-size: 17px; }
 dl { display: grid; grid-template-columns: repeat(auto-fill, minmax(150px, 1fr)); gap: 16px 24px; margin: 16px 0; }
-dl div { display: flex; flex-direction: column-reverse; }
+dl div { display: flex; flex-direction: column-reverse; justify-content: flex-end; }
 dt { font-size: 13px; line-height: 18px; color: var(--soft); }
 dd { margin: 0; font-size: 25px; line-height: 29px; font-weight: 600; }
 dd small { font-size: 15px; font-weight: 400; color: var(--soft); }
-table { border-collapse: collapse; width: 100%; font-variant-numeric: tabular-nums; }
+table { border-collapse: collapse; width: 100%; max-width: 500px; font-variant-numeric: tabular-nums; }
 caption { text-align: left; color: var(--soft); font-size: 13px; padding: 8px 0; }
 th { text-align: left; font-weight: 400; }
 thead th { color: var(--soft); font-size: 13px; }
 td, thead th + th { text-align: right; }
 th, td { padding: 4px 8px 4px 0; border-bottom: 1px solid var(--hair); }
 .links { list-style: none; padding: 0; display: flex; flex-wrap: wrap; gap: 4px 24px; }
-.links a { min-height: 40px; padding: 9px 0; }
+.links a { padding: 9px 0; }
 footer { padding-bottom: 32px; }
 @media (max-width: 719px) { header, main, footer { padding-left: 14px; padding-right: 14px; } h1 { font-size: 21px; line-height: 26px; } }
 @media print { .links { display: none; } }
