@@ -40,7 +40,7 @@ export function marginMap(
   eachFlow(model, bankModel(model, bank, levels), (flow) => {
     const row = sharePct[flow.level]!;
     for (const [k, { i, limitPct }] of judged.entries()) {
-      row[k] = Math.max(row[k]!, (1e4 * flow.voltageV[i]!) / phaseV / limitPct);
+      for (const { voltageV } of flow.buses) row[k] = Math.max(row[k]!, (1e4 * voltageV[i]!) / phaseV / limitPct);
     }
   });
   return { levelsKvar: levels.map((level) => level.levelKvar), ordersH: judged.map(({ orderH }) => orderH), sharePct };

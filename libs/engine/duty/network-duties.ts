@@ -10,9 +10,11 @@ const BASELINE_SHARE = 0.01;
 
 /** The same quantities with the bank out, per network. */
 interface Baseline {
-  distortionPct: number;
+  /** per bus */
+  distortionPct: number[];
   currentPct: number;
-  voltagePct: Float64Array;
+  /** per bus and order */
+  voltagePct: Float64Array[];
   sourcePct: Float64Array;
 }
 
@@ -82,9 +84,9 @@ export class NetworkDuties {
   #takeBaseline(flow: Flow): void {
     if (this.#baselines[flow.corner.network] !== undefined) return;
     this.#baselines[flow.corner.network] = {
-      distortionPct: flow.voltageDistortionPct,
+      distortionPct: flow.buses.map((bus) => bus.voltageDistortionPct),
       currentPct: flow.currentDistortionPct,
-      voltagePct: flow.voltageV.map((v) => this.#voltagePct(v)),
+      voltagePct: flow.buses.map((bus) => bus.voltageV.map((v) => this.#voltagePct(v))),
       sourcePct: flow.sourceA.map((a) => this.#sourcePct(a)),
     };
   }
@@ -92,20 +94,38 @@ export class NetworkDuties {
   #takeLevel(flow: Flow): void {
     const baseline = this.#baselines[flow.corner.network]!;
     const place: Place = { levelKvar: flow.levelKvar, corner: flow.corner.corner, orderH: null };
-    const { voltage, current } = this.#limits;
+    for (let bus = 0; bus < flow.buses.length; bus++) this.#takeVoltages(flow, bus, baseline, this.#at(place, bus));
+    this.#takeCurrents(flow, baseline, place);
+  }
+
+  // The name of the bus is worth saying only where there are several.
+  #at(place: Place, bus: number): Place {
+    return this.#model.buses.length === 1 ? place : { ...place, bus: this.#model.buses[bus]! };
+  }
+
+  #takeVoltages(flow: Flow, bus: number, baseline: Baseline, place: Place): void {
+    const { voltage } = this.#limits;
+    const { voltageV, voltageDistortionPct } = flow.buses[bus]!;
     this.#takeAgainst(this.#rows.distortion, place, {
-      value: flow.voltageDistortionPct,
+      value: voltageDistortionPct,
       limit: voltage.distortionPct,
-      without: baseline.distortionPct,
+      without: baseline.distortionPct[bus]!,
     });
     for (let i = 0; i < flow.ordersH.length; i++) {
       const orderH = flow.ordersH[i]!;
       const limit = voltage.orderPct(orderH);
-      if (limit !== null) {
-        const value = this.#voltagePct(flow.voltageV[i]!);
-        this.#takeAgainst(this.#rows.voltage, { ...place, orderH }, { value, limit, without: baseline.voltagePct[i]! });
-      }
-      if (current === null) continue;
+      if (limit === null) continue;
+      const value = this.#voltagePct(voltageV[i]!);
+      const without = baseline.voltagePct[bus]![i]!;
+      this.#takeAgainst(this.#rows.voltage, { ...place, orderH }, { value, limit, without });
+    }
+  }
+
+  #takeCurrents(flow: Flow, baseline: Baseline, place: Place): void {
+    const { current } = this.#limits;
+    if (current === null || flow.ordersH.length === 0) return;
+    for (let i = 0; i < flow.ordersH.length; i++) {
+      const orderH = flow.ordersH[i]!;
       this.#takeAgainst(
         this.#rows.current,
         { ...place, orderH },
@@ -116,7 +136,6 @@ export class NetworkDuties {
         },
       );
     }
-    if (current === null || flow.ordersH.length === 0) return;
     this.#takeAgainst(this.#rows.currentDistortion, place, {
       value: flow.currentDistortionPct,
       limit: current.totalPct,

@@ -22,6 +22,8 @@ export interface OrderPct {
 /** A load that injects harmonic current; `orders` wins where both stand. */
 export interface DistortingLoad {
   name: string;
+  /** bus it stands at, in a network of several; the first where absent */
+  bus?: string;
   /** fundamental current per phase at the bus [A] */
   fundamentalA: number;
   spectrum?: SpectrumName;

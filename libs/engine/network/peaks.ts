@@ -1,11 +1,11 @@
 import type { Bank } from '../layout/bank.js';
 import { goldenMinimum } from '../quantity/minimum.js';
-import { type ComplexColumn, type NetworkTable, networkTable } from './bus-admittance.js';
+import type { ComplexColumn } from './bus-admittance.js';
+import { type BusColumns, bankColumn, busColumns, seenSquareInto } from './bus-columns.js';
 import type { CornerCase } from './corners.js';
 import type { NetworkModel } from './network-model.js';
-import { admittanceSquareInto } from './scan-into.js';
 import { HIGHEST_ORDER_H } from './spectra.js';
-import { branchRatio, stageAdmittance, stageBranch } from './stage-admittance.js';
+import { branchRatio, type StageBranch, stageAdmittance, stageBranch } from './stage-admittance.js';
 
 /** An interior local maximum of |Z(h)| at the bus. */
 export interface Peak {
@@ -21,26 +21,21 @@ const APPROACH = 0.7;
 const APPROACH_FROM = 0.05;
 const APPROACH_POINTS = 30;
 
-interface FactorGrid {
-  ordersH: Float64Array;
-  /** per group */
-  stages: ComplexColumn[];
-  /** per network, filled on first use */
-  networks: (NetworkTable | undefined)[];
-}
-
 /**
- * Finds every interior local maximum of |Z(h)|, 1 < h < 50, of a bank on a network.
+ * Finds every interior local maximum of |Z(h)|, 1 < h < 50, of a bank on a network, at any bus.
  *
- * A peak can hide between two points of an even grid only where |Z| turns twice within a step. On a bus whose supply
- * and loads are inductive and resistive it turns only beside a branch's tuned order (between two tuned orders of the
- * lossless circuit there is exactly one pole), so the even grid is joined by points that close in geometrically on
- * every tuned order from both sides: each rising and each falling piece then holds a sample.
+ * A peak can hide between two points of an even grid only where |Z| turns twice within a step. Where supply and loads
+ * are inductive and resistive it turns only beside a branch's tuned order (between two tuned orders of the lossless
+ * circuit there is exactly one pole), so the even grid is joined by points that close in geometrically on every tuned
+ * order, in every corner, from both sides: each rising and each falling piece then holds a sample. Capacitors of the
+ * network itself add tuned orders of their own.
  */
 export class PeakFinder {
   readonly #model: NetworkModel;
   readonly #bank: Bank;
-  readonly #grids: (FactorGrid | undefined)[] = [];
+  readonly #ordersH: Float64Array;
+  readonly #stages: (ComplexColumn[] | undefined)[] = [];
+  readonly #buses: (BusColumns | undefined)[][] = [];
 
   /**
    * @param model the network without the bank
@@ -49,25 +44,26 @@ export class PeakFinder {
   constructor(model: NetworkModel, bank: Bank) {
     this.#model = model;
     this.#bank = bank;
+    this.#ordersH = peakGrid([...this.#tunedOrders(), ...networkTunedOrders(model)]);
   }
 
   /**
    * Every peak at one count vector in one corner.
    * @param vector connected stages per group
    * @param corner corner of the network
+   * @param bus index of the bus; the bank's where absent
    * @returns peaks by ascending order [Ω]
    * @source method-network
    */
-  peaks(vector: Int32Array, corner: CornerCase): Peak[] {
-    const grid = this.#grid(corner.factors);
-    const network = this.#table(grid, corner.network);
-    const square = new Float64Array(grid.ordersH.length);
-    admittanceSquareInto(network.bus, grid.stages, vector, square);
+  peaks(vector: Int32Array, corner: CornerCase, bus = this.#model.bankBus): Peak[] {
+    const columns = this.#columns(corner.network, bus);
+    const square = new Float64Array(this.#ordersH.length);
+    seenSquareInto(columns, bankColumn(this.#stagesAt(corner.factors), vector, square.length), square);
     const peaks: Peak[] = [];
     for (let i = 1; i < square.length - 1; i++) {
       if (!(square[i]! < square[i - 1]! && square[i]! <= square[i + 1]!)) continue;
-      const exact = (h: number): number => this.#admittanceSquare(h, vector, corner);
-      const orderH = goldenMinimum(exact, grid.ordersH[i - 1]!, grid.ordersH[i + 1]!, REFINED_WIDTH_H);
+      const exact = (h: number): number => this.#squareAt(h, vector, { corner, bus });
+      const orderH = goldenMinimum(exact, this.#ordersH[i - 1]!, this.#ordersH[i + 1]!, REFINED_WIDTH_H);
       if (orderH > 1 + GRID_STEP_H / 100 && orderH < HIGHEST_ORDER_H - GRID_STEP_H / 100) {
         peaks.push({ orderH, impedanceOhm: 1 / Math.sqrt(exact(orderH)) });
       }
@@ -79,47 +75,57 @@ export class PeakFinder {
    * The peak with the largest |Z|.
    * @param vector connected stages per group
    * @param corner corner of the network
+   * @param bus index of the bus; the bank's where absent
    * @returns the parallel resonance, or null where |Z| has no interior maximum
    * @source method-network
    */
-  greatest(vector: Int32Array, corner: CornerCase): Peak | null {
+  greatest(vector: Int32Array, corner: CornerCase, bus = this.#model.bankBus): Peak | null {
     let greatest: Peak | null = null;
-    for (const peak of this.peaks(vector, corner)) {
+    for (const peak of this.peaks(vector, corner, bus)) {
       if (greatest === null || peak.impedanceOhm > greatest.impedanceOhm) greatest = peak;
     }
     return greatest;
   }
 
-  #grid(factors: number): FactorGrid {
-    const known = this.#grids[factors];
-    if (known !== undefined) return known;
+  #branches(factors: number): StageBranch[] {
     const exponent = this.#model.corners.networks[0]!.path.resistanceExponent;
-    const branches = this.#bank.groups.map((group) =>
-      stageBranch(group, this.#model.corners.factors[factors]!, exponent),
+    const factor = this.#model.corners.factors[factors]!;
+    return this.#bank.groups.map((group) => stageBranch(group, factor, exponent));
+  }
+
+  #tunedOrders(): number[] {
+    return this.#model.corners.factors.flatMap((_, factors) =>
+      this.#branches(factors)
+        .filter((branch) => branch.inductiveOhm > 0)
+        .map((branch) => 1 / Math.sqrt(branchRatio(branch))),
     );
-    const tuned = branches.filter((b) => b.inductiveOhm > 0).map((b) => 1 / Math.sqrt(branchRatio(b)));
-    const ordersH = peakGrid(tuned);
-    const grid = { ordersH, stages: branches.map((branch) => stageAdmittance(branch, ordersH)), networks: [] };
-    this.#grids[factors] = grid;
-    return grid;
   }
 
-  #table(grid: FactorGrid, network: number): NetworkTable {
-    grid.networks[network] ??= networkTable(this.#model.corners.networks[network]!, this.#model.damping, grid.ordersH);
-    return grid.networks[network];
+  #stagesAt(factors: number): ComplexColumn[] {
+    this.#stages[factors] ??= this.#branches(factors).map((branch) => stageAdmittance(branch, this.#ordersH));
+    return this.#stages[factors];
   }
 
-  #admittanceSquare(orderH: number, vector: Int32Array, corner: CornerCase): number {
-    const at = Float64Array.of(orderH);
-    const network = this.#model.corners.networks[corner.network]!;
-    const table = networkTable(network, this.#model.damping, at);
-    const exponent = network.path.resistanceExponent;
-    const factors = this.#model.corners.factors[corner.factors]!;
-    const stages = this.#bank.groups.map((group) => stageAdmittance(stageBranch(group, factors, exponent), at));
+  #columns(network: number, bus: number): BusColumns {
+    const known = (this.#buses[network] ??= []);
+    known[bus] ??= busColumns(this.#model, network, bus, this.#ordersH);
+    return known[bus];
+  }
+
+  #squareAt(orderH: number, vector: Int32Array, at: { corner: CornerCase; bus: number }): number {
+    const ordersH = Float64Array.of(orderH);
+    const stages = this.#branches(at.corner.factors).map((branch) => stageAdmittance(branch, ordersH));
     const out = new Float64Array(1);
-    admittanceSquareInto(table.bus, stages, vector, out);
+    seenSquareInto(busColumns(this.#model, at.corner.network, at.bus, ordersH), bankColumn(stages, vector, 1), out);
     return out[0]!;
   }
+}
+
+// Capacitors that stand in the network: tuned orders of their own branches.
+function networkTunedOrders(model: NetworkModel): number[] {
+  return (model.nodal?.topology.capacitors ?? [])
+    .filter(({ group }) => group.reactorPct > 0)
+    .map(({ group }) => 1 / Math.sqrt(group.reactorPct / 100));
 }
 
 /**

@@ -2,6 +2,7 @@ import type { MarginMap } from '../duty/margin-map.js';
 import type { RuleSet } from '../duty/rules.js';
 import type { Bank } from '../layout/bank.js';
 import type { Loads } from '../network/loads.js';
+import type { Topology } from '../network/topology.js';
 import type { LoadRecord } from '../record/load-record.js';
 import type { ZoneTable } from '../record/zone-table.js';
 import type { Supply } from '../supply/supply.js';
@@ -24,6 +25,8 @@ export interface SettledSite {
   onExport: 'importOnly' | 'absolute';
   supply: Supply;
   loads: Loads;
+  /** null where the site has one bus */
+  topology: Topology | null;
   emcClass: 1 | 2 | 3;
 }
 

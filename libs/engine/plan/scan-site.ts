@@ -1,9 +1,8 @@
 import { bankLevels, type Level } from '../layout/levels.js';
-import { networkTable } from '../network/bus-admittance.js';
+import { type BusColumns, bankColumn, busColumns, seenSquareInto } from '../network/bus-columns.js';
 import type { Corner } from '../network/corners.js';
 import { networkModel } from '../network/network-model.js';
 import { PeakFinder } from '../network/peaks.js';
-import { admittanceSquareInto } from '../network/scan-into.js';
 import { stageAdmittance, stageBranch } from '../network/stage-admittance.js';
 import { InputProblem } from '../problem.js';
 import { settleBank } from './settle-bank.js';
@@ -12,7 +11,7 @@ import type { Site } from './site.js';
 
 /** |Z| at the bus over order, in one corner. */
 export interface ScannedLevel {
-  bus: 'main';
+  bus: string;
   levelKvar: number;
   corner: Corner;
   parallelOrderH: number | null;
@@ -41,29 +40,36 @@ export function scanSite(
   const { bank } = settleBank(site.bank ?? { stages: [] }, site.frequencyHz);
   const level = chosenLevel(bankLevels(bank, settled.nominalV), options.levelKvar);
   const vector = level.vectors[0]!;
-  const model = networkModel(settled.supply, settled.loads, settled.nominalV, 0);
+  const model = networkModel(settled.supply, settled.loads, {
+    nominalV: settled.nominalV,
+    loadA: 0,
+    topology: settled.topology,
+  });
   const finder = new PeakFinder(model, bank);
-  const square = new Float64Array(options.ordersH.length);
+  const { ordersH } = options;
+  const square = new Float64Array(ordersH.length);
   const exponent = settled.supply.resistanceExponent;
+  const columns = new Map<string, BusColumns>();
   return {
-    levels: model.corners.corners.map((corner) => {
-      const table = networkTable(model.corners.networks[corner.network]!, model.damping, options.ordersH);
-      const factors = model.corners.factors[corner.factors]!;
-      const stages = bank.groups.map((group) =>
-        stageAdmittance(stageBranch(group, factors, exponent), options.ordersH),
-      );
-      admittanceSquareInto(table.bus, stages, vector, square);
-      const peak = finder.greatest(vector, corner);
-      return {
-        bus: 'main' as const,
-        levelKvar: level.levelKvar,
-        corner: corner.corner,
-        parallelOrderH: peak?.orderH ?? null,
-        peakOhm: peak?.impedanceOhm ?? null,
-        orders: Array.from(options.ordersH),
-        impedanceOhm: Array.from(square, (y) => 1 / Math.sqrt(y)),
-      };
-    }),
+    levels: model.buses.flatMap((name, bus) =>
+      model.corners.corners.map((corner) => {
+        const key = `${bus} ${corner.network}`;
+        if (!columns.has(key)) columns.set(key, busColumns(model, corner.network, bus, ordersH));
+        const factors = model.corners.factors[corner.factors]!;
+        const stages = bank.groups.map((group) => stageAdmittance(stageBranch(group, factors, exponent), ordersH));
+        seenSquareInto(columns.get(key)!, bankColumn(stages, vector, ordersH.length), square);
+        const peak = finder.greatest(vector, corner, bus);
+        return {
+          bus: name,
+          levelKvar: level.levelKvar,
+          corner: corner.corner,
+          parallelOrderH: peak?.orderH ?? null,
+          peakOhm: peak?.impedanceOhm ?? null,
+          orders: Array.from(ordersH),
+          impedanceOhm: Array.from(square, (y) => 1 / Math.sqrt(y)),
+        };
+      }),
+    ),
   };
 }
 

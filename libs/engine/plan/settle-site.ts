@@ -1,4 +1,7 @@
-import type { Loads, LoadsInput } from '../network/loads.js';
+import type { Loads } from '../network/loads.js';
+import { settleTopology } from '../network/settle-topology.js';
+import type { Topology } from '../network/topology.js';
+import { settleBank } from './settle-bank.js';
 import { InputProblem, type Problem, type Remark, remark } from '../problem.js';
 import { compensatedSum } from '../quantity/compensated-sum.js';
 import type { LoadRecord } from '../record/load-record.js';
@@ -10,6 +13,22 @@ import type { Site } from './site.js';
 export interface Settled {
   site: SettledSite;
   assumptions: Remark[];
+}
+
+/**
+ * The topology of a site with a network part.
+ * @param site validated site
+ * @returns the topology, or null for one bus
+ * @throws InputProblem naming every part that stands nowhere
+ */
+export function settledTopology(site: Site): Topology | null {
+  if (site.network === undefined) return null;
+  return settleTopology(site.network, {
+    nominalV: site.bus.nominalV,
+    frequencyHz: site.frequencyHz,
+    transformerBuses: (site.supply.transformers ?? []).map(({ bus }) => bus),
+    group: (capacitor) => settleBank({ stages: [capacitor], interStageUh: 1 }, site.frequencyHz).bank.groups[0]!,
+  });
 }
 
 /** Collects the values that were taken where the site file gave none. */
@@ -56,7 +75,8 @@ export function settleSite(site: Site, record: LoadRecord | null): Settled {
     targetPowerFactor: defaults.take(site.target?.powerFactor, 0.95, 'target.powerFactor'),
     onExport: defaults.take(site.target?.onExport, 'importOnly', 'target.onExport'),
     supply: settleSupply(site.supply, defaults),
-    loads: settleLoads(site.loads, record, defaults),
+    loads: settleLoads(site, record, defaults),
+    topology: settledTopology(site),
     emcClass: site.rules === 'iec' ? (defaults.take(site.limits?.emcClass, 2, 'limits.emcClass') as 1 | 2 | 3) : 2,
   };
   if (site.recordedBank === undefined) defaults.note('default.recordedBank', 'recordedBank', {});
@@ -78,7 +98,7 @@ function contradictions(site: Site): Problem[] {
       found: 'none',
     });
   }
-  if (transformers.length > 1 && site.supply.arrangement === undefined) {
+  if (transformers.length > 1 && site.supply.arrangement === undefined && site.network === undefined) {
     problems.push({
       code: 'missing',
       path: 'supply.arrangement',
@@ -86,7 +106,7 @@ function contradictions(site: Site): Problem[] {
       found: 'nothing',
     });
   }
-  if (transformers.length > 1 && site.supply.arrangement === 'separate') {
+  if (transformers.length > 1 && site.supply.arrangement === 'separate' && site.network === undefined) {
     problems.push({
       code: 'not-supported-yet',
       path: 'supply.arrangement',
@@ -127,8 +147,11 @@ function settleSupply(supply: SupplyInput, defaults: Defaults): Supply {
   };
 }
 
-function settleLoads(loads: LoadsInput | undefined, record: LoadRecord | null, defaults: Defaults): Loads {
-  const meanKw = record === null ? 0 : Math.max(0, compensatedSum(record.activeKw) / record.activeKw.length);
+function settleLoads(site: Site, record: LoadRecord | null, defaults: Defaults): Loads {
+  const { loads } = site;
+  // Motors and loads listed in a network damp already: the mean of the record would count them twice.
+  const listed = (site.network?.motors ?? []).length + (site.network?.resistive ?? []).length > 0;
+  const meanKw = record === null || listed ? 0 : Math.max(0, compensatedSum(record.activeKw) / record.activeKw.length);
   const max = defaults.take(loads?.dampingKw?.max, meanKw, 'loads.dampingKw.max', 'kW');
   if (loads?.distorting?.length === 0) defaults.note('loads.distorting.none', 'loads.distorting', {});
   if (loads?.backgroundPct?.length === 0) defaults.note('loads.backgroundPct.none', 'loads.backgroundPct', {});

@@ -3,6 +3,7 @@ import type { BankInput } from '../layout/bank.js';
 import type { CatalogueInput } from '../layout/catalogue.js';
 import type { Finance, PriceBook, Tariff } from '../money/papers.js';
 import type { LoadsInput } from '../network/loads.js';
+import type { NetworkInput } from '../network/topology.js';
 import type { Control } from '../operation/control.js';
 import type { SupplyInput } from '../supply/supply.js';
 
@@ -32,6 +33,8 @@ export interface Site {
   control?: Partial<Control>;
   supply: SupplyInput;
   loads?: LoadsInput;
+  /** the network where the site has several buses */
+  network?: NetworkInput;
   bank?: BankInput;
   limits?: { emcClass?: 1 | 2 | 3 };
   tariff?: Tariff;
