@@ -89,7 +89,11 @@ function greatest(terms: readonly Term[], untilS: number): ClosingPeak {
 /** Samples between two looks at which terms still count. */
 const BLOCK = 512;
 
-function marched(terms: readonly Term[], { fromS, stepS }: { fromS: number; stepS: number }, best: ClosingPeak): ClosingPeak {
+function marched(
+  terms: readonly Term[],
+  { fromS, stepS }: { fromS: number; stepS: number },
+  best: ClosingPeak,
+): ClosingPeak {
   const now = terms.map(({ s, c }) => cMultiply(c, cExp(s, fromS)));
   const turn = terms.map(({ s }) => cExp(s, stepS));
   let square = best.peakA * best.peakA;
@@ -236,7 +240,8 @@ class LoopImpedance {
   #guesses(count: number): ComplexNumber[] {
     const { sourceH, closing } = this.#circuit;
     const loopH = closing.inductanceH > 0 ? Math.min(closing.inductanceH, sourceH) : sourceH;
-    const low = 1 / Math.sqrt((sourceH + closing.inductanceH) * (closing.capacitanceF + this.#plainF + this.#reactorF()));
+    const low =
+      1 / Math.sqrt((sourceH + closing.inductanceH) * (closing.capacitanceF + this.#plainF + this.#reactorF()));
     const high = 2 / Math.sqrt(loopH * closing.capacitanceF);
     return Array.from({ length: count }, (_, k) => {
       const pair = Math.floor(k / 2);

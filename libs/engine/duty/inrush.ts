@@ -1,5 +1,7 @@
 import type { Bank } from '../layout/bank.js';
 import { ratedA, stageOhm } from '../layout/stage.js';
+import type { SeriesOhm } from '../supply/supply-path.js';
+import { closingPeak, type SeriesBranch } from './closing-circuit.js';
 import { CAPACITOR_RULES, type RuleSet } from './rules.js';
 
 /** Peak current of closing one stage of a group, closed forms. */
@@ -10,7 +12,7 @@ export interface InrushStage {
   /** null where the stage is the only one */
   ontoBankPeakA: number | null;
   ontoBankHz: number | null;
-  /** exact peak of the linear circuit; null until it is computed */
+  /** exact peak of the linear circuit at the worst closing instant, alone or onto any level [A]; null in a quick look */
   worstPeakA: number | null;
   limitPeakA: number | null;
 }
@@ -90,4 +92,66 @@ function inrushLimitA(switchPeakA: number | null, ownA: number, rules: RuleSet):
   const { inrushRatio } = CAPACITOR_RULES[rules];
   const limits = [inrushRatio === null ? null : inrushRatio * ownA, switchPeakA].filter((limit) => limit !== null);
   return limits.length === 0 ? null : Math.min(...limits);
+}
+
+/** What the exact solution needs of the site. */
+export interface ClosingSite {
+  nominalV: number;
+  frequencyHz: number;
+  /** R and X of the supply at its greatest fault level, per phase [Ω] */
+  supplyOhm: SeriesOhm;
+  /** every count vector the bank can stand at */
+  vectors: readonly Int32Array[];
+}
+
+/** Exact peaks of closing one stage of a group. */
+export interface ExactInrush {
+  /** onto the supply alone [A] */
+  singlePeakA: number;
+  /** the greatest, alone or onto any level at which a stage of the group is left [A] */
+  worstPeakA: number;
+}
+
+/**
+ * Exact peak of closing one stage of a group at the worst instant: alone, and onto every level. The inductance between
+ * stages counts once, before the closing stage, as in the closed form; damping loads and harmonics are left out.
+ * @param bank the bank
+ * @param index the closing stage's group
+ * @param site voltage, frequency, supply, count vectors
+ * @returns peaks [A]
+ * @source method-inrush
+ */
+export function exactInrush(bank: Bank, index: number, site: ClosingSite): ExactInrush {
+  const omega = 2 * Math.PI * site.frequencyHz;
+  const branches = bank.groups.map((group) => {
+    const ohm = stageOhm(group);
+    const farad = 1 / (omega * ohm.capacitiveOhm);
+    return { rOhm: ohm.resistanceOhm, inductanceH: ohm.inductiveOhm / omega, capacitanceF: farad };
+  });
+  const own = branches[index]!;
+  const ontoOwn = { ...own, inductanceH: own.inductanceH + bank.interStageUh * 1e-6 };
+  const circuit = {
+    sourceOhm: site.supplyOhm.rOhm,
+    sourceH: site.supplyOhm.xOhm / omega,
+    crestV: (Math.SQRT2 * site.nominalV) / Math.sqrt(3),
+    frequencyHz: site.frequencyHz,
+  };
+  const singlePeakA = closingPeak({ ...circuit, connected: [], closing: own }).peakA;
+  let worstPeakA = singlePeakA;
+  for (const vector of site.vectors) {
+    if (vector[index]! >= bank.groups[index]!.count) continue;
+    const connected = branches.flatMap((branch, g) => (vector[g]! > 0 ? [scaledBranch(branch, vector[g]!)] : []));
+    if (connected.length === 0) continue;
+    worstPeakA = Math.max(worstPeakA, closingPeak({ ...circuit, connected, closing: ontoOwn }).peakA);
+  }
+  return { singlePeakA, worstPeakA };
+}
+
+// Equal branches in parallel are one branch of their sum.
+function scaledBranch(branch: SeriesBranch, count: number): SeriesBranch {
+  return {
+    rOhm: branch.rOhm / count,
+    inductanceH: branch.inductanceH / count,
+    capacitanceF: branch.capacitanceF * count,
+  };
 }

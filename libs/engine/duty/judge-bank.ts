@@ -7,14 +7,16 @@ import {
   type NearPeak,
   type NetworkSummary,
   nearestPeak,
+  strongestInto,
   summarizeNetwork,
 } from '../network/network-check.js';
 import type { NetworkModel } from '../network/network-model.js';
 import { PeakFinder } from '../network/peaks.js';
 import type { Supply } from '../supply/supply.js';
+import { pathImpedanceInto } from '../supply/supply-path.js';
 import { type ChargeStage, chargeStages } from './charge.js';
 import { type Duty, DutyRow, NEAR_RATIO } from './duty-row.js';
-import { type InrushStage, inrushStages } from './inrush.js';
+import { type ExactInrush, exactInrush, type InrushStage, inrushStages } from './inrush.js';
 import { NetworkDuties, networkLimits } from './network-duties.js';
 import { CAPACITOR_RULES, graver, type RuleSet, type Verdict } from './rules.js';
 import { type DutyVoltages, StageDuties } from './stage-duties.js';
@@ -76,17 +78,26 @@ export function judgeBank(model: NetworkModel, bank: Bank, levels: Level[], basi
     for (const stage of stages) stage.take(flow);
   });
   const charge = chargeStages(bank, basis.rules, basis.frequencyHz, basis.reconnectDelayS);
+  const exact = bank.groups.map((_, g) =>
+    exactInrush(bank, g, {
+      nominalV: basis.voltages.nominalV,
+      frequencyHz: basis.frequencyHz,
+      supplyOhm: fundamentalOhm(model),
+      vectors: levels.flatMap(({ vectors }) => vectors),
+    }),
+  );
   const inrush = inrushStages(bank, {
     nominalV: basis.voltages.nominalV,
     frequencyHz: basis.frequencyHz,
     shortCircuitMva: empty.shortCircuitMva,
     rules: basis.rules,
-  });
+  }).map((stage, g) => ({ ...stage, worstPeakA: exact[g]!.worstPeakA }));
   const duties = [
     ...stages.flatMap((stage, g) => [
       ...stage.duties(),
       ...dischargeDuty(bank, charge[g]!, basis.rules),
       ...inrushDuty(bank, inrush[g]!, basis.rules),
+      ...exactInrushDuty(bank, inrush[g]!, exact[g]!, basis.rules),
     ]),
     ...bankDuties.duties(),
   ];
@@ -117,7 +128,7 @@ function dischargeDuty(bank: Bank, charge: ChargeStage, rules: RuleSet): Duty[] 
 }
 
 /**
- * The inrush row of a group, where it has a limit.
+ * The inrush row of a group by the closed forms, where it has a limit.
  * @param bank the bank
  * @param inrush its closed forms
  * @param rules rule set
@@ -125,22 +136,37 @@ function dischargeDuty(bank: Bank, charge: ChargeStage, rules: RuleSet): Duty[] 
  * @source method-limits
  */
 export function inrushDuty(bank: Bank, inrush: InrushStage, rules: RuleSet): Duty[] {
-  if (inrush.limitPeakA === null) return [];
   const peakA = Math.max(inrush.singlePeakA, inrush.ontoBankPeakA ?? 0);
+  return inrushRow(bank, inrush, { name: 'inrush current', peakA, singleA: inrush.singlePeakA, rules });
+}
+
+function exactInrushDuty(bank: Bank, inrush: InrushStage, exact: ExactInrush, rules: RuleSet): Duty[] {
+  const { worstPeakA: peakA, singlePeakA: singleA } = exact;
+  return inrushRow(bank, inrush, { name: 'inrush current, exact', peakA, singleA, rules });
+}
+
+function inrushRow(
+  bank: Bank,
+  inrush: InrushStage,
+  { name, peakA, singleA, rules }: { name: string; peakA: number; singleA: number; rules: RuleSet },
+): Duty[] {
   const limitA = inrush.limitPeakA;
+  if (limitA === null) return [];
   const source = bank.groups[inrush.group]!.switchPeakA === limitA ? 'site' : CAPACITOR_RULES[rules].source;
-  const row = new DutyRow({
-    name: 'inrush current',
-    group: inrush.group,
-    unit: 'A',
-    source,
-    nearRatio: NEAR_RATIO.other,
-  });
+  const row = new DutyRow({ name, group: inrush.group, unit: 'A', source, nearRatio: NEAR_RATIO.other });
   row.take(peakA, limitA, { levelKvar: null, corner: null, orderH: null });
   const duty = row.duty()!;
   // Over the limit only because of a customary inductance between stages: reactors or an inrush-limiting switch are due.
-  const assumed = !bank.interStageGiven && inrush.singlePeakA <= limitA;
+  const assumed = !bank.interStageGiven && singleA <= limitA;
   return [duty.verdict === 'avoid' && assumed ? { ...duty, verdict: 'watch' } : duty];
+}
+
+// Supply at its strongest, seen from the bank's bus at the fundamental, loads and capacitors left out.
+function fundamentalOhm(model: NetworkModel): { rOhm: number; xOhm: number } {
+  const z = new Float64Array(2);
+  if (model.nodal === null) pathImpedanceInto(model.corners.networks[1]!.path, 1, z);
+  else strongestInto(model, z);
+  return { rOhm: z[0]!, xOhm: z[1]! };
 }
 
 /**

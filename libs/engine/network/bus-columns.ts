@@ -1,6 +1,6 @@
 import type { ComplexColumn } from './bus-admittance.js';
-import { nodalTable } from './nodal-impedance.js';
 import { type NetworkModel, tableAt } from './network-model.js';
+import { nodalTable } from './nodal-impedance.js';
 
 /**
  * What a bus and the bank's bus know of each other with the bank out, over orders. Connecting the bank is a rank-1

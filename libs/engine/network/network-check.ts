@@ -196,16 +196,33 @@ function nodalShortCircuit(
   model: NetworkModel,
   paths: { strongest: SupplyPath; weakest: SupplyPath },
 ): { mostMva: number; leastMva: number } {
-  const { topology } = model.nodal!;
-  const bare = { ...topology, motorKw: topology.motorKw.map(() => 0), resistiveKw: topology.motorKw.map(() => 0) };
-  const undamped = { ...model.damping, dampingKw: 0, listedShare: 0 };
   const atBus = (path: SupplyPath): number[] =>
-    networkStates(topology).map((state) => {
-      const withoutCapacitors = { ...state, capacitorsIn: state.capacitorsIn.map(() => 0) };
-      const nodal = nodalCase(bare, withoutCapacitors, path, undamped);
-      const { z, nodes } = nodalTable(nodal, Float64Array.of(1));
-      const at = 2 * nodal.busNode[model.bankBus]! * (nodes + 1);
-      return model.nominalV ** 2 / Math.sqrt(z[at]! ** 2 + z[at + 1]! ** 2) / 1e6;
-    });
+    bareImpedances(model, path).map(([re, im]) => model.nominalV ** 2 / Math.sqrt(re * re + im * im) / 1e6);
   return { mostMva: Math.max(...atBus(paths.strongest)), leastMva: Math.min(...atBus(paths.weakest)) };
+}
+
+/**
+ * Impedance of the supply at its strongest, seen from the bank's bus at the fundamental.
+ * @param model the network without the bank, with several buses
+ * @param out receives [Re, Im] of the standing with the least |Z| [Ω]
+ * @source method-network
+ */
+export function strongestInto(model: NetworkModel, out: Float64Array): void {
+  const found = bareImpedances(model, model.corners.networks[1]!.path);
+  const size = ([re, im]: [number, number]): number => re * re + im * im;
+  out.set(found.reduce((least, z) => (size(z) < size(least) ? z : least)));
+}
+
+// Source, transformers, cables and running generators alone, in every standing.
+function bareImpedances(model: NetworkModel, path: SupplyPath): [number, number][] {
+  const { topology } = model.nodal!;
+  const none = topology.motorKw.map(() => 0);
+  const bare = { ...topology, motorKw: none, resistiveKw: none };
+  return networkStates(topology).map((state) => {
+    const withoutCapacitors = { ...state, capacitorsIn: state.capacitorsIn.map(() => 0) };
+    const nodal = nodalCase(bare, withoutCapacitors, path, { ...model.damping, dampingKw: 0, listedShare: 0 });
+    const { z, nodes } = nodalTable(nodal, Float64Array.of(1));
+    const at = 2 * nodal.busNode[model.bankBus]! * (nodes + 1);
+    return [z[at]!, z[at + 1]!];
+  });
 }

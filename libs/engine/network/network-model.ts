@@ -2,9 +2,9 @@ import type { Supply } from '../supply/supply.js';
 import { type DampingModel, type NetworkTable, networkTable } from './bus-admittance.js';
 import { type CornerSet, cornerSet } from './corners.js';
 import type { Loads } from './loads.js';
+import { networkStates } from './network-states.js';
 import { type NodalCase, nodalCase } from './nodal-case.js';
 import { type NodalTable, nodalTable } from './nodal-impedance.js';
-import { networkStates } from './network-states.js';
 import { combine, type Excitation, excitation } from './summation.js';
 import type { Topology } from './topology.js';
 

@@ -33,7 +33,10 @@ export function networkStates(topology: Topology): NetworkState[] {
   }
   if (topology.transformerOut) {
     const outs = topology.transformerBus.map((_, i) => i);
-    states = states.flatMap((s) => [s, ...outs.map((out) => ({ ...withName(s, `transformer ${out + 1} out`), transformerOut: out }))]);
+    states = states.flatMap((s) => [
+      s,
+      ...outs.map((out) => ({ ...withName(s, `transformer ${out + 1} out`), transformerOut: out })),
+    ]);
   }
   refuseTooMany(states.length);
   refuseIslands(topology, normal);

@@ -56,31 +56,10 @@ export function nodalCase(topology: Topology, state: NetworkState, path: SupplyP
   const busNodes = Math.max(...busNode) + 1;
   const hasPrimary = topology.transformerBus.length > 0;
   const sourceNode = hasPrimary ? busNodes : busNode[0]!;
-  const branches: NodalBranch[] = [];
-  for (const [i, bus] of topology.transformerBus.entries()) {
-    if (i === state.transformerOut) continue;
-    branches.push({ from: sourceNode, to: busNode[bus]!, ...path.transformers[i]!, capacitiveOhm: 0 });
-  }
-  for (const { from, to, rOhm, xOhm } of topology.cables) {
-    if (busNode[from] !== busNode[to]) {
-      branches.push({ from: busNode[from]!, to: busNode[to]!, rOhm, xOhm, capacitiveOhm: 0 });
-    }
-  }
-  for (const [i, { bus, rOhm, xOhm }] of topology.generators.entries()) {
-    if (state.runningGenerators[i]) branches.push({ from: busNode[bus]!, to: -1, rOhm, xOhm, capacitiveOhm: 0 });
-  }
-  for (const [i, { bus, group }] of topology.capacitors.entries()) {
-    const count = state.capacitorsIn[i]!;
-    if (count === 0) continue;
-    const ohm = stageOhm(group);
-    branches.push({
-      from: busNode[bus]!,
-      to: -1,
-      rOhm: ohm.resistanceOhm / count,
-      xOhm: ohm.inductiveOhm / count,
-      capacitiveOhm: ohm.capacitiveOhm / count,
-    });
-  }
+  const branches = [
+    ...seriesBranches(topology, state, { path, busNode, sourceNode }),
+    ...shuntBranches(topology, state, busNode),
+  ];
   const conductance = new Float64Array(hasPrimary ? busNodes + 1 : busNodes);
   for (const load of dampingLoads(topology, damping)) {
     const node = busNode[load.bus]!;
@@ -99,6 +78,49 @@ export function nodalCase(topology: Topology, state: NetworkState, path: SupplyP
     conductance,
     resistanceExponent: path.resistanceExponent,
   };
+}
+
+function seriesBranches(
+  topology: Topology,
+  state: NetworkState,
+  at: { path: SupplyPath; busNode: Int32Array; sourceNode: number },
+): NodalBranch[] {
+  const transformers = topology.transformerBus.flatMap((bus, i) =>
+    i === state.transformerOut
+      ? []
+      : [{ from: at.sourceNode, to: at.busNode[bus]!, ...at.path.transformers[i]!, capacitiveOhm: 0 }],
+  );
+  const cables = topology.cables
+    .map(({ from, to, rOhm, xOhm }) => ({
+      from: at.busNode[from]!,
+      to: at.busNode[to]!,
+      rOhm,
+      xOhm,
+      capacitiveOhm: 0,
+    }))
+    .filter(({ from, to }) => from !== to);
+  return [...transformers, ...cables];
+}
+
+function shuntBranches(topology: Topology, state: NetworkState, busNode: Int32Array): NodalBranch[] {
+  const generators = topology.generators
+    .filter((_, i) => state.runningGenerators[i])
+    .map(({ bus, rOhm, xOhm }) => ({ from: busNode[bus]!, to: -1, rOhm, xOhm, capacitiveOhm: 0 }));
+  const capacitors = topology.capacitors.flatMap(({ bus, group }, i) => {
+    const count = state.capacitorsIn[i]!;
+    if (count === 0) return [];
+    const ohm = stageOhm(group);
+    return [
+      {
+        from: busNode[bus]!,
+        to: -1,
+        rOhm: ohm.resistanceOhm / count,
+        xOhm: ohm.inductiveOhm / count,
+        capacitiveOhm: ohm.capacitiveOhm / count,
+      },
+    ];
+  });
+  return [...generators, ...capacitors];
 }
 
 function dampingLoads(topology: Topology, damping: NodalDamping): { bus: number; siemens: number; motorOhm: number }[] {

@@ -85,8 +85,9 @@ export function invertInto(y: Float64Array, n: number, out: Float64Array, offset
     const square = y[at]! * y[at]! + y[at + 1]! * y[at + 1]!;
     const pRe = y[at]! / square;
     const pIm = -y[at + 1]! / square;
-    scaleRow(y, 2 * pivot * n, n, pRe, pIm);
-    scaleRow(out, offset + 2 * pivot * n, n, pRe, pIm);
+    const factor = { n, fRe: pRe, fIm: pIm };
+    scaleRow(y, 2 * pivot * n, factor);
+    scaleRow(out, offset + 2 * pivot * n, factor);
     for (let row = 0; row < n; row++) {
       if (row === pivot) continue;
       const fRe = y[2 * (row * n + pivot)]!;
@@ -106,19 +107,19 @@ export function invertInto(y: Float64Array, n: number, out: Float64Array, offset
   }
 }
 
-function scaleRow(m: Float64Array, from: number, n: number, re: number, im: number): void {
-  for (let k = 0; k < n; k++) {
-    const a = m[from + 2 * k]!;
-    const b = m[from + 2 * k + 1]!;
-    m[from + 2 * k] = a * re - b * im;
-    m[from + 2 * k + 1] = a * im + b * re;
-  }
-}
-
 interface RowFactor {
   n: number;
   fRe: number;
   fIm: number;
+}
+
+function scaleRow(m: Float64Array, from: number, { n, fRe, fIm }: RowFactor): void {
+  for (let k = 0; k < n; k++) {
+    const a = m[from + 2 * k]!;
+    const b = m[from + 2 * k + 1]!;
+    m[from + 2 * k] = a * fRe - b * fIm;
+    m[from + 2 * k + 1] = a * fIm + b * fRe;
+  }
 }
 
 function subtractRow(m: Float64Array, to: number, from: number, { n, fRe, fIm }: RowFactor): void {

@@ -107,7 +107,8 @@ export class PeakFinder {
   }
 
   #columns(network: number, bus: number): BusColumns {
-    const known = (this.#buses[network] ??= []);
+    this.#buses[network] ??= [];
+    const known = this.#buses[network];
     known[bus] ??= busColumns(this.#model, network, bus, this.#ordersH);
     return known[bus];
   }

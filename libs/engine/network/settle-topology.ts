@@ -111,7 +111,12 @@ class Names {
     const from = this.at(between[0], `${path}[0]`);
     const to = this.at(between[1], `${path}[1]`);
     if (between[0] === between[1]) {
-      this.problems.push({ code: 'inconsistent', path, expected: 'two different buses', found: `"${between[0]}" twice` });
+      this.problems.push({
+        code: 'inconsistent',
+        path,
+        expected: 'two different buses',
+        found: `"${between[0]}" twice`,
+      });
     }
     return { from, to };
   }

@@ -1,12 +1,12 @@
 import type { Loads } from '../network/loads.js';
 import { settleTopology } from '../network/settle-topology.js';
 import type { Topology } from '../network/topology.js';
-import { settleBank } from './settle-bank.js';
 import { InputProblem, type Problem, type Remark, remark } from '../problem.js';
 import { compensatedSum } from '../quantity/compensated-sum.js';
 import type { LoadRecord } from '../record/load-record.js';
 import type { Supply, SupplyInput } from '../supply/supply.js';
 import type { SettledSite } from './outcome.js';
+import { settleBank } from './settle-bank.js';
 import type { Site } from './site.js';
 
 /** A site with its defaults filled in, and a line for each of them. */

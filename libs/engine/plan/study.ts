@@ -64,7 +64,11 @@ export function studySite(site: Site, record: LoadRecord, zone: ZoneTable): Stud
     months,
     recordSummary: summarizeRecord(record),
     requirement: summarizeRequirement(record, needKvar, months, settled.targetPowerFactor),
-    model: networkModel(settled.supply, settled.loads, { nominalV: settled.nominalV, loadA, topology: settled.topology }),
+    model: networkModel(settled.supply, settled.loads, {
+      nominalV: settled.nominalV,
+      loadA,
+      topology: settled.topology,
+    }),
     voltageScale: record.voltageV?.map((u) => (u / settled.nominalV) ** 2) ?? null,
   };
 }
