@@ -221,6 +221,8 @@ describe('the program ends with', () => {
     ['an unknown option', ['plan', 'site.json', '--loud', '--json']],
     ['stdin twice', ['plan', '-', '--load', '-', '--json']],
     ['orders that run backwards', ['scan', 'site.json', '--orders', '50:1:1', '--json']],
+    ['a format nobody knows', ['read', 'load.csv', '--format', 'abacus', '--json']],
+    ['a zone nobody lives in', ['read', 'load.csv', '--time-zone', 'Mars/Olympus', '--json']],
     ['a level in words', ['scan', 'site.json', '--level', 'all', '--json']],
   ])('2 for %s', (_what, args) => {
     const { code, stdout, stderr } = work.run(args);
