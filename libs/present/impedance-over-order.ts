@@ -66,7 +66,7 @@ function scanBank(outcome: Outcome, bank: Bank, endH: number): Scan {
   const { supply, loads, nominalV } = outcome.site;
   const count = Math.round((endH - 1) / STEP_H) + 1;
   const ordersH = Float64Array.from({ length: count }, (_, i) => 1 + i * STEP_H);
-  const model = networkModel(supply, loads, { nominalV, loadA: 0 });
+  const model = networkModel(supply, loads, nominalV, 0);
   const nominal = model.corners.corners[0]!;
   const { bus } = networkTable(model.corners.networks[nominal.network]!, model.damping, ordersH);
   const factors = model.corners.factors[nominal.factors]!;

@@ -180,7 +180,7 @@ function engineFlows(network: Network, drive: Copy['drive']): { visited: Visited
     rippleHz: null,
     transformers: network.transformers.map((t) => ({ ...t, noLoadLossKw: 0, noLoadCurrentPct: 0 })),
   };
-  const model = networkModel(supply, loads, { nominalV: network.nominalV, loadA: 100 });
+  const model = networkModel(supply, loads, network.nominalV, 100);
   const bank = { groups: network.groups, interStageUh: 2, interStageGiven: true, ambientCategory: null };
   const tables = bankModel(model, bank, bankLevels(bank, network.nominalV));
   const visited: Visited[] = [];

@@ -27,6 +27,8 @@ export interface ClosingPeak {
   peakA: number;
   /** when after closing [s] */
   afterS: number;
+  /** phase of the source at closing, e(t) = Ê·cos(ωt + φ) [rad] */
+  phaseRad: number;
 }
 
 const ONE: ComplexNumber = { re: 1, im: 0 };
@@ -59,7 +61,16 @@ export function closingPeak(circuit: ClosingCircuit): ClosingPeak {
     { s: atOmega, c: cDivide(busV, loop.value(atOmega)) },
     ...loop.zeros().map((s) => ({ s, c: cDivide(busV, cMultiply(cSubtract(s, atOmega), loop.slope(s))) })),
   ];
-  return greatest(terms, MOST_PERIODS / circuit.frequencyHz);
+  const found = greatest(terms, MOST_PERIODS / circuit.frequencyHz);
+  const z = sumAt(terms, found.afterS);
+  return { ...found, phaseRad: -Math.atan2(z.im, z.re) };
+}
+
+/** The peak before its phase is known. */
+type Found = Omit<ClosingPeak, 'phaseRad'>;
+
+function sumAt(terms: readonly Term[], t: number): ComplexNumber {
+  return terms.reduce((sum, { s, c }) => cAdd(sum, cMultiply(c, cExp(s, t))), { re: 0, im: 0 });
 }
 
 interface Term {
@@ -68,8 +79,8 @@ interface Term {
 }
 
 // Marches at a step set by the fastest term that still counts and stops when no later sum of magnitudes can be greater.
-function greatest(terms: readonly Term[], untilS: number): ClosingPeak {
-  let best: ClosingPeak = { peakA: 0, afterS: 0 };
+function greatest(terms: readonly Term[], untilS: number): Found {
+  let best: Found = { peakA: 0, afterS: 0 };
   let t = 0;
   while (t < untilS) {
     const sizes = terms.map(({ s, c }) => cAbs(c) * Math.exp(s.re * t));
@@ -92,8 +103,8 @@ const BLOCK = 512;
 function marched(
   terms: readonly Term[],
   { fromS, stepS }: { fromS: number; stepS: number },
-  best: ClosingPeak,
-): ClosingPeak {
+  best: Found,
+): Found {
   const now = terms.map(({ s, c }) => cMultiply(c, cExp(s, fromS)));
   const turn = terms.map(({ s }) => cExp(s, stepS));
   let square = best.peakA * best.peakA;
@@ -119,7 +130,7 @@ function marched(
 }
 
 // The samples bracket the peak; three rounds of finer steps bring it to well within 1e-6.
-function refined(terms: readonly Term[], found: ClosingPeak): ClosingPeak {
+function refined(terms: readonly Term[], found: Found): Found {
   const fastest = terms.reduce((w, { s }) => Math.max(w, Math.abs(s.im)), 0);
   let width = (2 * Math.PI) / fastest / SAMPLES;
   let best = found;
@@ -127,7 +138,7 @@ function refined(terms: readonly Term[], found: ClosingPeak): ClosingPeak {
     const middle = best.afterS;
     for (let k = -20; k <= 20; k++) {
       const t = Math.max(0, middle + (k * width) / 20);
-      const size = cAbs(terms.reduce((sum, { s, c }) => cAdd(sum, cMultiply(c, cExp(s, t))), { re: 0, im: 0 }));
+      const size = cAbs(sumAt(terms, t));
       if (size > best.peakA) best = { peakA: size, afterS: t };
     }
     width /= 20;

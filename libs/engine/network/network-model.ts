@@ -50,20 +50,32 @@ export interface NetworkModel {
 }
 
 /**
- * The network of a site without its bank.
+ * The network of a site with one bus, without its bank.
  * @param supply settled supply
  * @param loads settled loads
- * @param site bus voltage [V], I_L [A], and the topology where there are several buses
+ * @param nominalV bus voltage [V]
+ * @param loadA I_L [A]
  * @returns corners, excitation and tables at the orders present
  * @source method-network
  */
-export function networkModel(
+export function networkModel(supply: Supply, loads: Loads, nominalV: number, loadA: number): NetworkModel {
+  return siteNetwork(supply, loads, { nominalV, loadA, topology: null });
+}
+
+/**
+ * The network of a site without its bank.
+ * @param supply settled supply
+ * @param loads settled loads
+ * @param site bus voltage [V], I_L [A], and the topology, null where there is one bus
+ * @returns corners, excitation and tables at the orders present
+ * @source method-network
+ */
+export function siteNetwork(
   supply: Supply,
   loads: Loads,
-  site: { nominalV: number; loadA: number; topology?: Topology | null },
+  site: { nominalV: number; loadA: number; topology: Topology | null },
 ): NetworkModel {
-  const { nominalV, loadA } = site;
-  const topology = site.topology ?? null;
+  const { nominalV, loadA, topology } = site;
   const damping = { nominalV, motorSharePct: loads.motorSharePct };
   const states = topology === null ? [null] : networkStates(topology);
   const corners = cornerSet(supply, loads, nominalV, states);

@@ -1,7 +1,7 @@
 import { bankLevels, type Level } from '../layout/levels.js';
 import { type BusColumns, bankColumn, busColumns, seenSquareInto } from '../network/bus-columns.js';
 import type { Corner } from '../network/corners.js';
-import { networkModel } from '../network/network-model.js';
+import { siteNetwork } from '../network/network-model.js';
 import { PeakFinder } from '../network/peaks.js';
 import { stageAdmittance, stageBranch } from '../network/stage-admittance.js';
 import { InputProblem } from '../problem.js';
@@ -40,7 +40,7 @@ export function scanSite(
   const { bank } = settleBank(site.bank ?? { stages: [] }, site.frequencyHz);
   const level = chosenLevel(bankLevels(bank, settled.nominalV), options.levelKvar);
   const vector = level.vectors[0]!;
-  const model = networkModel(settled.supply, settled.loads, {
+  const model = siteNetwork(settled.supply, settled.loads, {
     nominalV: settled.nominalV,
     loadA: 0,
     topology: settled.topology,

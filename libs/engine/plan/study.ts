@@ -1,5 +1,5 @@
 import type { Bank } from '../layout/bank.js';
-import { type NetworkModel, networkModel } from '../network/network-model.js';
+import { type NetworkModel, siteNetwork } from '../network/network-model.js';
 import type { Control } from '../operation/control.js';
 import { type MeterAfter, meterAfter } from '../operation/meter-after.js';
 import { type OperationMonth, operationMonths, type Simulated } from '../operation/operation.js';
@@ -64,7 +64,7 @@ export function studySite(site: Site, record: LoadRecord, zone: ZoneTable): Stud
     months,
     recordSummary: summarizeRecord(record),
     requirement: summarizeRequirement(record, needKvar, months, settled.targetPowerFactor),
-    model: networkModel(settled.supply, settled.loads, {
+    model: siteNetwork(settled.supply, settled.loads, {
       nominalV: settled.nominalV,
       loadA,
       topology: settled.topology,
