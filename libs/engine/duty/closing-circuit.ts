@@ -1,13 +1,5 @@
 import { type ComplexNumber, cAbs, cAdd, cDivide, cMultiply, cScale, cSubtract } from '../quantity/complex-number.js';
-
-/** A series branch at the fundamental's resistance: R + sL + 1/(sC); inductance 0 for a plain stage. */
-export interface SeriesBranch {
-  rOhm: number;
-  /** [H] */
-  inductanceH: number;
-  /** [F], > 0 */
-  capacitanceF: number;
-}
+import { branchZ, branchZeros, mergedBranches, type SeriesBranch } from './series-branch.js';
 
 /** The circuit into which one uncharged branch is closed, per phase. */
 export interface ClosingCircuit {
@@ -100,11 +92,7 @@ function greatest(terms: readonly Term[], untilS: number): Found {
 /** Samples between two looks at which terms still count. */
 const BLOCK = 512;
 
-function marched(
-  terms: readonly Term[],
-  { fromS, stepS }: { fromS: number; stepS: number },
-  best: Found,
-): Found {
+function marched(terms: readonly Term[], { fromS, stepS }: { fromS: number; stepS: number }, best: Found): Found {
   const now = terms.map(({ s, c }) => cMultiply(c, cExp(s, fromS)));
   const turn = terms.map(({ s }) => cExp(s, stepS));
   let square = best.peakA * best.peakA;
@@ -265,52 +253,4 @@ class LoopImpedance {
   #reactorF(): number {
     return this.#reactors.reduce((sum, branch) => sum + branch.capacitanceF, 0);
   }
-}
-
-function branchZ(branch: SeriesBranch, s: ComplexNumber): { value: ComplexNumber; slope: ComplexNumber } {
-  const capacitive = cDivide(ONE, cScale(s, branch.capacitanceF));
-  return {
-    value: cAdd(cAdd({ re: branch.rOhm, im: 0 }, cScale(s, branch.inductanceH)), capacitive),
-    slope: cSubtract({ re: branch.inductanceH, im: 0 }, cDivide(capacitive, s)),
-  };
-}
-
-function branchZeros({ rOhm, inductanceH, capacitanceF }: SeriesBranch): ComplexNumber[] {
-  const half = rOhm / (2 * inductanceH);
-  const rest = 1 / (inductanceH * capacitanceF) - half * half;
-  const root = Math.sqrt(Math.abs(rest));
-  return rest >= 0
-    ? [
-        { re: -half, im: root },
-        { re: -half, im: -root },
-      ]
-    : [
-        { re: -half + root, im: 0 },
-        { re: -half - root, im: 0 },
-      ];
-}
-
-// Branches of one tuning and quality are one branch of their sum: left apart they would hide a double zero.
-function mergedBranches(branches: readonly SeriesBranch[]): SeriesBranch[] {
-  const merged: SeriesBranch[] = [];
-  for (const branch of branches) {
-    const alike = merged.find(
-      (known) =>
-        nearly(known.inductanceH * known.capacitanceF, branch.inductanceH * branch.capacitanceF) &&
-        nearly(known.rOhm * known.capacitanceF, branch.rOhm * branch.capacitanceF),
-    );
-    if (alike === undefined) {
-      merged.push({ ...branch });
-      continue;
-    }
-    const share = alike.capacitanceF / (alike.capacitanceF + branch.capacitanceF);
-    alike.rOhm *= share;
-    alike.inductanceH *= share;
-    alike.capacitanceF += branch.capacitanceF;
-  }
-  return merged;
-}
-
-function nearly(a: number, b: number): boolean {
-  return Math.abs(a - b) <= 1e-9 * Math.max(Math.abs(a), Math.abs(b));
 }

@@ -1,5 +1,6 @@
 import { type ComplexNumber, cAdd, cDivide, cMultiply } from '../quantity/complex-number.js';
-import { type ClosingCircuit, closingPeak, type SeriesBranch } from './closing-circuit.js';
+import { type ClosingCircuit, closingPeak } from './closing-circuit.js';
+import type { SeriesBranch } from './series-branch.js';
 
 /**
  * The circuit of a closing as a plain SPICE netlist, for a second opinion: resistances at their fundamental value, the

@@ -1,8 +1,9 @@
 import type { Bank } from '../layout/bank.js';
 import { ratedA, stageOhm } from '../layout/stage.js';
 import type { SeriesOhm } from '../supply/supply-path.js';
-import { closingPeak, type SeriesBranch } from './closing-circuit.js';
+import { closingPeak } from './closing-circuit.js';
 import { CAPACITOR_RULES, type RuleSet } from './rules.js';
+import type { SeriesBranch } from './series-branch.js';
 
 /** Peak current of closing one stage of a group, closed forms. */
 export interface InrushStage {

@@ -78,14 +78,7 @@ export function judgeBank(model: NetworkModel, bank: Bank, levels: Level[], basi
     for (const stage of stages) stage.take(flow);
   });
   const charge = chargeStages(bank, basis.rules, basis.frequencyHz, basis.reconnectDelayS);
-  const exact = bank.groups.map((_, g) =>
-    exactInrush(bank, g, {
-      nominalV: basis.voltages.nominalV,
-      frequencyHz: basis.frequencyHz,
-      supplyOhm: fundamentalOhm(model),
-      vectors: levels.flatMap(({ vectors }) => vectors),
-    }),
-  );
+  const exact = exactInrushes(model, bank, levels, basis);
   const inrush = inrushStages(bank, {
     nominalV: basis.voltages.nominalV,
     frequencyHz: basis.frequencyHz,
@@ -138,6 +131,50 @@ function dischargeDuty(bank: Bank, charge: ChargeStage, rules: RuleSet): Duty[] 
 export function inrushDuty(bank: Bank, inrush: InrushStage, rules: RuleSet): Duty[] {
   const peakA = Math.max(inrush.singlePeakA, inrush.ontoBankPeakA ?? 0);
   return inrushRow(bank, inrush, { name: 'inrush current', peakA, singleA: inrush.singlePeakA, rules });
+}
+
+function exactInrushes(model: NetworkModel, bank: Bank, levels: Level[], basis: JudgeBasis): ExactInrush[] {
+  return bank.groups.map((_, g) =>
+    exactInrush(bank, g, {
+      nominalV: basis.voltages.nominalV,
+      frequencyHz: basis.frequencyHz,
+      supplyOhm: fundamentalOhm(model),
+      vectors: levels.flatMap(({ vectors }) => vectors),
+    }),
+  );
+}
+
+/**
+ * The rows of exact inrush, where there is a limit; without one nothing is solved.
+ * @param model the network without the bank
+ * @param bank the bank
+ * @param levels its levels
+ * @param basis rules, voltages, supply
+ * @returns rows
+ * @source method-inrush
+ */
+export function closingDuties(model: NetworkModel, bank: Bank, levels: Level[], basis: JudgeBasis): Duty[] {
+  const closed = inrushStages(bank, {
+    nominalV: basis.voltages.nominalV,
+    frequencyHz: basis.frequencyHz,
+    shortCircuitMva: summarizeNetwork(model, []).shortCircuitMva,
+    rules: basis.rules,
+  });
+  if (closed.every(({ limitPeakA }) => limitPeakA === null)) return [];
+  const exact = exactInrushes(model, bank, levels, basis);
+  return closed.flatMap((stage, g) => exactInrushDuty(bank, stage, exact[g]!, basis.rules));
+}
+
+/**
+ * The rows of the discharge resistors that are stated.
+ * @param bank the bank
+ * @param basis rules, frequency, reconnection delay
+ * @returns rows
+ * @source method-limits
+ */
+export function dischargeDuties(bank: Bank, basis: JudgeBasis): Duty[] {
+  const charge = chargeStages(bank, basis.rules, basis.frequencyHz, basis.reconnectDelayS);
+  return charge.flatMap((stage) => dischargeDuty(bank, stage, basis.rules));
 }
 
 function exactInrushDuty(bank: Bank, inrush: InrushStage, exact: ExactInrush, rules: RuleSet): Duty[] {

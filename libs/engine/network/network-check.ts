@@ -1,6 +1,7 @@
 import { type SupplyPath, shortCircuitMva } from '../supply/supply-path.js';
 import type { Corner } from './corners.js';
-import type { BankModel, Flow } from './flow.js';
+import type { BankModel } from './flow.js';
+import type { Flow } from './flow-at.js';
 import type { NetworkModel } from './network-model.js';
 import { networkStates } from './network-states.js';
 import { nodalCase } from './nodal-case.js';
@@ -142,7 +143,7 @@ export function nearestPeak(model: NetworkModel, bank: BankModel, finder: PeakFi
   if (model.excitation.ordersH.length === 0) return null;
   let nearest: NearPeak | null = null;
   let leastH = Number.POSITIVE_INFINITY;
-  for (const peak of everyPeak(model, bank, finder)) {
+  for (const peak of everyPeak(model, bank, finder, reachH)) {
     const awayH = Math.abs(peak.peakOrderH - peak.presentOrderH);
     if (awayH > reachH || awayH >= leastH) continue;
     leastH = awayH;
@@ -151,14 +152,33 @@ export function nearestPeak(model: NetworkModel, bank: BankModel, finder: PeakFi
   return nearest;
 }
 
+/**
+ * Does any peak come near an order present; stops at the first.
+ * @param model the network without the bank
+ * @param bank the bank
+ * @param finder peaks of the same bank
+ * @param reachH how near counts [order]
+ * @returns true where one does
+ * @source method-limits
+ */
+export function hasNearPeak(model: NetworkModel, bank: BankModel, finder: PeakFinder, reachH: number): boolean {
+  if (model.excitation.ordersH.length === 0) return false;
+  for (const { peakOrderH, presentOrderH } of everyPeak(model, bank, finder, reachH)) {
+    if (Math.abs(peakOrderH - presentOrderH) <= reachH) return true;
+  }
+  return false;
+}
+
 // Levels above 0, corners, count vectors, buses, in that order of nesting; each peak with the order present it is
 // nearest to.
-function* everyPeak(model: NetworkModel, bank: BankModel, finder: PeakFinder): Generator<NearPeak> {
+function* everyPeak(model: NetworkModel, bank: BankModel, finder: PeakFinder, reachH: number): Generator<NearPeak> {
+  const within = (lowH: number, highH: number): boolean =>
+    model.excitation.ordersH.some((h) => h >= lowH - reachH && h <= highH + reachH);
   for (const { levelKvar, vectors } of bank.levels.slice(1)) {
     for (const corner of model.corners.corners) {
       for (const vector of vectors) {
         for (const [k, bus] of model.buses.entries()) {
-          for (const { orderH } of finder.peaks(vector, corner, k)) {
+          for (const { orderH } of finder.peaks(vector, corner, k, within)) {
             const presentOrderH = nearestOrder(model.excitation.ordersH, orderH);
             yield { bus, levelKvar, corner: corner.corner, peakOrderH: orderH, presentOrderH };
           }

@@ -14,6 +14,11 @@ export interface Peak {
 }
 
 const GRID_STEP_H = 0.02;
+const EVEN_STEPS = Math.round((HIGHEST_ORDER_H - 1) / GRID_STEP_H);
+const EVEN_GRID_H = Float64Array.from(
+  { length: EVEN_STEPS + 1 },
+  (_, i) => 1 + (i * (HIGHEST_ORDER_H - 1)) / EVEN_STEPS,
+);
 /** Peaks are refined to well within 1e-4 of an order. */
 const REFINED_WIDTH_H = 1e-6;
 /** Points on either side of a tuned order close in on it by this factor, from this share of the order. */
@@ -37,17 +42,25 @@ export class PeakFinder {
   readonly #model: NetworkModel;
   readonly #bank: Bank;
   readonly #ordersH: Float64Array;
+  /** reused from call to call */
+  readonly #square: Float64Array;
   readonly #stages: (ComplexColumn[] | undefined)[] = [];
   readonly #buses: (BusColumns | undefined)[][] = [];
 
   /**
    * @param model the network without the bank
    * @param bank the bank
+   * @param near looks only within this of an order present [order]; everywhere where absent
    */
-  constructor(model: NetworkModel, bank: Bank) {
+  constructor(model: NetworkModel, bank: Bank, near?: number) {
     this.#model = model;
     this.#bank = bank;
-    this.#ordersH = peakGrid([...this.#tunedOrders(), ...networkTunedOrders(model)]);
+    const all = peakGrid([...this.#tunedOrders(), ...networkTunedOrders(model)]);
+    // A step more on either side, so that a peak at the edge still has a sample beyond it.
+    const reach = near === undefined ? Number.POSITIVE_INFINITY : near + 2 * GRID_STEP_H;
+    const present = model.excitation.ordersH;
+    this.#ordersH = near === undefined ? all : all.filter((h) => present.some((order) => Math.abs(h - order) <= reach));
+    this.#square = new Float64Array(this.#ordersH.length);
   }
 
   /**
@@ -55,18 +68,27 @@ export class PeakFinder {
    * @param vector connected stages per group
    * @param corner corner of the network
    * @param bus index of the bus; the bank's where absent
+   * @param worthRefining leaves out brackets of orders that don't matter to the caller
    * @returns peaks by ascending order [Ω]
    * @source method-network
    */
-  peaks(vector: Int32Array, corner: CornerCase, bus = this.#model.bankBus): Peak[] {
+  peaks(
+    vector: Int32Array,
+    corner: CornerCase,
+    bus = this.#model.bankBus,
+    worthRefining: (lowH: number, highH: number) => boolean = () => true,
+  ): Peak[] {
     const columns = this.#columns(corner.network, bus);
-    const square = new Float64Array(this.#ordersH.length);
+    const square = this.#square;
     seenSquareInto(columns, bankColumn(this.#stagesAt(corner.factors), vector, square.length), square);
     const peaks: Peak[] = [];
     for (let i = 1; i < square.length - 1; i++) {
       if (!(square[i]! < square[i - 1]! && square[i]! <= square[i + 1]!)) continue;
+      const lowH = this.#ordersH[i - 1]!;
+      const highH = this.#ordersH[i + 1]!;
+      if (!worthRefining(lowH, highH)) continue;
       const exact = (h: number): number => this.#squareAt(h, vector, { corner, bus });
-      const orderH = goldenMinimum(exact, this.#ordersH[i - 1]!, this.#ordersH[i + 1]!, REFINED_WIDTH_H);
+      const orderH = goldenMinimum(exact, lowH, highH, REFINED_WIDTH_H);
       if (orderH > 1 + GRID_STEP_H / 100 && orderH < HIGHEST_ORDER_H - GRID_STEP_H / 100) {
         peaks.push({ orderH, impedanceOhm: 1 / Math.sqrt(exact(orderH)) });
       }
@@ -138,17 +160,13 @@ function networkTunedOrders(model: NetworkModel): number[] {
  * @returns ascending orders, 1 … 50
  */
 export function peakGrid(tunedH: readonly number[]): Float64Array {
-  const count = Math.round((HIGHEST_ORDER_H - 1) / GRID_STEP_H);
-  const points = new Set<number>();
-  for (let i = 0; i <= count; i++) points.add(1 + (i * (HIGHEST_ORDER_H - 1)) / count);
-  for (const tuned of tunedH) {
-    for (let k = 0; k < APPROACH_POINTS; k++) {
-      const step = tuned * APPROACH_FROM * APPROACH ** k;
-      points.add(tuned - step);
-      points.add(tuned + step);
-    }
-  }
-  const ascending = Float64Array.from(points)
+  const approaching = tunedH.flatMap((tuned) =>
+    Array.from({ length: APPROACH_POINTS }, (_, k) => tuned * APPROACH_FROM * APPROACH ** k).flatMap((step) => [
+      tuned - step,
+      tuned + step,
+    ]),
+  );
+  const ascending = Float64Array.of(...EVEN_GRID_H, ...approaching)
     .filter((h) => h >= 1 && h <= HIGHEST_ORDER_H)
     .sort();
   return ascending.filter((h, i) => i === 0 || h - ascending[i - 1]! > ONE_POINT_H);

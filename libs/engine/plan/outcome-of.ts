@@ -1,16 +1,18 @@
-import { type JudgeBasis, type Judgement, judgeBank } from '../duty/judge-bank.js';
 import { marginMap } from '../duty/margin-map.js';
-import { CAPACITOR_RULES, graver, type Verdict } from '../duty/rules.js';
+import { CAPACITOR_RULES, type Verdict } from '../duty/rules.js';
 import type { Bank } from '../layout/bank.js';
 import { bankLevels, summarizeBank } from '../layout/levels.js';
 import type { Control } from '../operation/control.js';
 import { summarizeOperation } from '../operation/operation.js';
 import type { Remark } from '../problem.js';
 import { cautions } from './cautions.js';
+import { withEffects } from './effects.js';
 import { figures } from './figures.js';
+import { basisOf, judge, overallVerdict } from './judge-basis.js';
 import type { Outcome, Rival } from './outcome.js';
 import { reasons } from './reasons.js';
 import type { Result } from './result.js';
+import { robustness } from './robustness.js';
 import { type Operated, operate, type Study } from './study.js';
 
 /** Reactor ratio of the comparison where the bank is plain [%]. */
@@ -54,11 +56,11 @@ export function outcomeOf(
     charge: { stages: judgement.charge },
     inrush: { stages: judgement.inrush },
     conductorMinA,
-    robustness: null,
+    robustness: bank.groups.length === 0 ? null : robustness(study, bank, control),
     money: null,
     verdict: overallVerdict(study, judgement),
     reasons: [...said.reasons, ...reasons(study, bank, operated, judgement)],
-    assumptions: [...study.assumptions, ...said.assumptions],
+    assumptions: withEffects([...study.assumptions, ...said.assumptions], study, bank, control),
     cautions: cautions(judgement),
     figures: [],
   };
@@ -74,48 +76,6 @@ export function outcomeOf(
     margins: marginMap(study.model, bank, levels, basisOf(study, control)),
     rival: rivalOf(study, bank, control, result.verdict),
   };
-}
-
-/**
- * What a bank on this study is judged by.
- * @param study site and record
- * @param control settings
- * @returns rules, voltages, supply, loads and delay
- */
-export function basisOf(study: Study, control: Control): JudgeBasis {
-  const { site } = study;
-  return {
-    rules: site.rules,
-    frequencyHz: site.frequencyHz,
-    voltages: { nominalV: site.nominalV, highestV: site.highestV },
-    emcClass: site.emcClass,
-    supply: site.supply,
-    loads: site.loads,
-    reconnectDelayS: control.reconnectDelayS,
-  };
-}
-
-/**
- * Judges a bank on a study's network.
- * @param study site and record
- * @param bank the bank
- * @param control settings; the reconnection delay sets the resistors
- * @returns judgement
- * @source method-limits
- */
-export function judge(study: Study, bank: Bank, control: Control): Judgement {
-  return judgeBank(study.model, bank, bankLevels(bank, study.site.nominalV), basisOf(study, control));
-}
-
-/**
- * The verdict with what the record itself leaves open: an unknown old bank is at best `watch`.
- * @param study site and record
- * @param judgement the bank judged
- * @returns overall verdict
- * @source method-controller
- */
-export function overallVerdict(study: Study, judgement: Judgement): Verdict {
-  return study.site.recordedBank.state === 'unknown' ? graver(judgement.verdict, 'watch') : judgement.verdict;
 }
 
 function series(study: Study, operated: Operated): Outcome['series'] {

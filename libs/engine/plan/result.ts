@@ -10,6 +10,7 @@ import type { Remark } from '../problem.js';
 import type { RecordSummary } from '../record/record-summary.js';
 import type { RequirementSummary } from '../requirement/requirement.js';
 import type { Figure } from './figure.js';
+import type { Robustness } from './robustness.js';
 
 /** The answer of `plan` and `assess`. */
 export interface Result {
@@ -23,7 +24,8 @@ export interface Result {
   charge: { stages: ChargeStage[] };
   inrush: { stages: InrushStage[] };
   conductorMinA: number;
-  robustness: null;
+  /** how firm the verdict is; null for an empty bank */
+  robustness: Robustness | null;
   money: null;
   verdict: Verdict;
   reasons: Remark[];

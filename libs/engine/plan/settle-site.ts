@@ -5,8 +5,8 @@ import { InputProblem, type Problem, type Remark, remark } from '../problem.js';
 import { compensatedSum } from '../quantity/compensated-sum.js';
 import type { LoadRecord } from '../record/load-record.js';
 import type { Supply, SupplyInput } from '../supply/supply.js';
-import type { SettledSite } from './outcome.js';
 import { settleBank } from './settle-bank.js';
+import type { SettledSite } from './settled-site.js';
 import type { Site } from './site.js';
 
 /** A site with its defaults filled in, and a line for each of them. */

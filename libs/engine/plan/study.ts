@@ -14,8 +14,8 @@ import { type BusLoad, busLoad, type Metering, type OldBank } from '../requireme
 import { needColumn, type Target, targetKw } from '../requirement/need.js';
 import { type RequirementSummary, summarizeRequirement } from '../requirement/requirement.js';
 import { transformerPassage } from '../supply/transformer-passage.js';
-import type { SettledSite } from './outcome.js';
 import { settleSite } from './settle-site.js';
+import type { SettledSite } from './settled-site.js';
 import type { Site } from './site.js';
 
 /** Everything about a site and its record that does not depend on the bank. */

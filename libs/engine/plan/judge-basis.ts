@@ -1,0 +1,48 @@
+import { type JudgeBasis, type Judgement, judgeBank } from '../duty/judge-bank.js';
+import { graver, type Verdict } from '../duty/rules.js';
+import type { Bank } from '../layout/bank.js';
+import { bankLevels } from '../layout/levels.js';
+import type { Control } from '../operation/control.js';
+import type { Study } from './study.js';
+
+/**
+ * What a bank on this study is judged by.
+ * @param study site and record
+ * @param control settings
+ * @returns rules, voltages, supply, loads and delay
+ */
+export function basisOf(study: Study, control: Control): JudgeBasis {
+  const { site } = study;
+  return {
+    rules: site.rules,
+    frequencyHz: site.frequencyHz,
+    voltages: { nominalV: site.nominalV, highestV: site.highestV },
+    emcClass: site.emcClass,
+    supply: site.supply,
+    loads: site.loads,
+    reconnectDelayS: control.reconnectDelayS,
+  };
+}
+
+/**
+ * Judges a bank on a study's network.
+ * @param study site and record
+ * @param bank the bank
+ * @param control settings; the reconnection delay sets the resistors
+ * @returns judgement
+ * @source method-limits
+ */
+export function judge(study: Study, bank: Bank, control: Control): Judgement {
+  return judgeBank(study.model, bank, bankLevels(bank, study.site.nominalV), basisOf(study, control));
+}
+
+/**
+ * The verdict with what the record itself leaves open: an unknown old bank is at best `watch`.
+ * @param study site and record
+ * @param judgement the bank judged
+ * @returns overall verdict
+ * @source method-controller
+ */
+export function overallVerdict(study: Study, judgement: { verdict: Verdict }): Verdict {
+  return study.site.recordedBank.state === 'unknown' ? graver(judgement.verdict, 'watch') : judgement.verdict;
+}
