@@ -46,6 +46,7 @@ export * from './plan/assess-bank.js';
 export * from './plan/figure.js';
 export * from './plan/outcome.js';
 export * from './plan/plan-bank.js';
+export * from './plan/reactor-choice.js';
 export * from './plan/result.js';
 export * from './plan/robustness.js';
 export * from './plan/scan-site.js';

@@ -66,6 +66,8 @@ export interface FirmVerdict {
   verdict: Verdict;
   /** the judged duty with the largest ratio, or null */
   worst: Duty | null;
+  /** every duty that was looked at */
+  duties: Duty[];
 }
 
 /**
@@ -86,12 +88,12 @@ export function firmVerdict(model: NetworkModel, bank: Bank, basis: JudgeBasis):
     null,
   );
   const verdict = duties.reduce<Verdict>((gravest, duty) => graver(gravest, duty.verdict), quick.verdict);
-  if (verdict !== 'clear') return { verdict, worst };
+  if (verdict !== 'clear') return { verdict, worst, duties };
   const near = hasNearPeak(
     model,
     bankModel(model, bank, levels),
     new PeakFinder(model, bank, PEAK_REACH_H),
     PEAK_REACH_H,
   );
-  return { verdict: near ? 'watch' : 'clear', worst };
+  return { verdict: near ? 'watch' : 'clear', worst, duties };
 }

@@ -17,6 +17,8 @@ export interface OrderPct {
   orderH: number;
   /** [%] of the fundamental current (loads) or of nominal voltage (background) */
   pct: number;
+  /** angle to a reference common to the loads of a bus, where known [°]; those with angles add as phasors */
+  angleDeg?: number;
 }
 
 /** A load that injects harmonic current; `orders` wins where both stand. */

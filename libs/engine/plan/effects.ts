@@ -90,12 +90,9 @@ const MOVABLE: readonly Movable[] = [
   },
 ];
 
-/** The figure an effect is told of: the largest ratio of a duty to its limit. */
-export const WORST_RATIO_FIGURE = 'duties.worstRatio';
-
 /**
- * Puts beside each assumption how far it moves the worst ratio of a duty to its limit, when the assumed value goes to
- * either end of what practice meets, and whether the verdict changes.
+ * Puts beside each assumption how far it moves a duty's share of its limit when the assumed value goes to either end of
+ * what practice meets, and whether the verdict changes. The duty told of is the one that moves most.
  * @param assumptions lines of the plan
  * @param study site and record
  * @param bank the bank
@@ -111,27 +108,44 @@ export function withEffects(assumptions: readonly Remark[], study: Study, bank: 
     const movable = MOVABLE.find(({ code }) => code === line.code);
     if (movable === undefined) return line;
     const ends = movable.range(now).map((value) => judged(study, control, movable.put(now, value)));
-    const ratios = ends.map(({ ratio }) => ratio);
-    const effect = {
-      figure: WORST_RATIO_FIGURE,
-      low: Math.min(present.ratio, ...ratios),
-      high: Math.max(present.ratio, ...ratios),
-      changesVerdict: ends.some(({ verdict }) => verdict !== present.verdict),
-    };
-    return { ...line, effect };
+    const changesVerdict = ends.some(({ verdict }) => verdict !== present.verdict);
+    return { ...line, effect: { ...mostMoved(present.ratios, ends), changesVerdict } };
   });
-  const weight = ({ effect }: Remark): number =>
-    effect === null ? -1 : (effect.changesVerdict ? 1e6 : 0) + effect.high - effect.low;
   return told
     .map((line, i) => ({ line, i }))
     .sort((a, b) => weight(b.line) - weight(a.line) || a.i - b.i)
     .map(({ line }) => line);
 }
 
-function judged(study: Study, control: Control, { site, bank }: Moved): { verdict: Verdict; ratio: number } {
+function weight({ effect }: Remark): number {
+  return effect === null ? -1 : (effect.changesVerdict ? 1e6 : 0) + effect.high - effect.low;
+}
+
+interface Judged {
+  verdict: Verdict;
+  /** ratio to its limit by duty */
+  ratios: Map<string, number>;
+}
+
+function mostMoved(present: Judged['ratios'], ends: readonly Judged[]): { figure: string; low: number; high: number } {
+  let most = { figure: '', low: 0, high: 0 };
+  for (const [duty, ratio] of present) {
+    const reached = [ratio, ...ends.flatMap(({ ratios }) => ratios.get(duty) ?? [])];
+    const low = Math.min(...reached);
+    const high = Math.max(...reached);
+    if (most.figure === '' || high - low > most.high - most.low) most = { figure: `duties.${duty}`, low, high };
+  }
+  return most;
+}
+
+function judged(study: Study, control: Control, { site, bank }: Moved): Judged {
   const { supply, loads, nominalV, topology } = site;
   const model = siteNetwork(supply, loads, { nominalV, loadA: study.model.loadA, topology });
   const basis = { ...basisOf(study, control), voltages: { nominalV, highestV: site.highestV }, supply, loads };
   const found = firmVerdict(model, bank, basis);
-  return { verdict: overallVerdict(study, found), ratio: found.worst?.ratio ?? 0 };
+  const ratios = new Map<string, number>();
+  for (const { name, group, ratio } of found.duties) {
+    if (ratio !== null) ratios.set(group === null ? name : `${name}, group ${group + 1}`, ratio);
+  }
+  return { verdict: overallVerdict(study, found), ratios };
 }

@@ -10,6 +10,7 @@ import { withEffects } from './effects.js';
 import { figures } from './figures.js';
 import { basisOf, judge, overallVerdict } from './judge-basis.js';
 import type { Outcome, Rival } from './outcome.js';
+import { reactorTrials } from './reactor-choice.js';
 import { reasons } from './reasons.js';
 import type { Result } from './result.js';
 import { robustness } from './robustness.js';
@@ -35,7 +36,7 @@ export interface Said {
 export function outcomeOf(
   kind: Outcome['kind'],
   study: Study,
-  choice: { bank: Bank; control: Control; said: Said },
+  choice: { bank: Bank; control: Control; said: Said; ratedV: readonly number[] },
 ): Outcome {
   const { bank, control, said } = choice;
   const levels = bankLevels(bank, study.site.nominalV);
@@ -57,6 +58,7 @@ export function outcomeOf(
     inrush: { stages: judgement.inrush },
     conductorMinA,
     robustness: bank.groups.length === 0 ? null : robustness(study, bank, control),
+    reactorTrials: reactorTrials(study, bank, control, choice.ratedV),
     money: null,
     verdict: overallVerdict(study, judgement),
     reasons: [...said.reasons, ...reasons(study, bank, operated, judgement)],

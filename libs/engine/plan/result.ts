@@ -10,6 +10,7 @@ import type { Remark } from '../problem.js';
 import type { RecordSummary } from '../record/record-summary.js';
 import type { RequirementSummary } from '../requirement/requirement.js';
 import type { Figure } from './figure.js';
+import type { ReactorTrial } from './reactor-choice.js';
 import type { Robustness } from './robustness.js';
 
 /** The answer of `plan` and `assess`. */
@@ -26,6 +27,8 @@ export interface Result {
   conductorMinA: number;
   /** how firm the verdict is; null for an empty bank */
   robustness: Robustness | null;
+  /** the bank's stages with the customary reactor ratios; empty where its groups differ in theirs */
+  reactorTrials: ReactorTrial[];
   money: null;
   verdict: Verdict;
   reasons: Remark[];
