@@ -163,6 +163,9 @@ function layoutOf(found: Candidate, map: MeterMap): CsvLayout {
   const names = header.map(({ name }) => name);
   const sample = found.data.map(({ cells }) => cells);
   const time = mappedTime(header, map) ?? chooseTimeColumns(header, sample);
+  if (time === null && sample.length === 0) {
+    throw new InputProblem([{ code: 'empty-file', expected: 'rows of data under the header', found: 'none' }]);
+  }
   if (time === null) {
     const expected = 'a column of dates and times';
     const listed = names.join(', ').slice(0, 300);
