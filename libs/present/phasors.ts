@@ -89,7 +89,7 @@ function arrows(load: [number, number], sum: [number, number], bankA: number): M
   const along = 1.2 * Math.max(Math.hypot(...load), Math.hypot(...sum), 1);
   const marks: Mark[] = [
     { kind: 'arrow', from: [0, 0], to: [along, 0], part: 'beyond' },
-    { kind: 'label', x: along, y: 0, text: 'U', side: 'right', part: 'beyond' },
+    { kind: 'label', x: along, y: 0, text: 'U', side: 'above', part: 'beyond' },
     { kind: 'arrow', from: [0, 0], to: load, part: 'site' },
   ];
   if (bankA > 0) {
@@ -98,7 +98,7 @@ function arrows(load: [number, number], sum: [number, number], bankA: number): M
     marks.push({ kind: 'arrow', from: [0, 0], to: sum, part: 'after' });
     marks.push({ kind: 'label', x: sum[0], y: sum[1], text: ends.sum.name, side: 'right', part: 'after' });
   }
-  marks.push({ kind: 'label', x: load[0], y: load[1], text: ends.load.name, side: 'left', part: 'site' });
+  marks.push({ kind: 'label', x: load[0], y: load[1], text: ends.load.name, side: 'below', part: 'site' });
   return marks;
 }
 
