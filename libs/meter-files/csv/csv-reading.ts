@@ -40,7 +40,7 @@ export function readUnder(file: CsvFile, meaning: CsvMeaning): ReadResult {
   const { reader, map } = file;
   const sources = sourcesOf(file, meaning);
   const rules = stampRules(file, meaning.order);
-  const { moments, grid, ends, because } = placedRows(file, rules, { sources, keep: meaning.keep });
+  const { moments, grid, ends, because, skipped } = placedRows(file, rules, { sources, keep: meaning.keep });
   const shiftS = ends ? grid.intervalS : 0;
   const { utcS } = moments;
   const ordered = {
@@ -51,7 +51,6 @@ export function readUnder(file: CsvFile, meaning: CsvMeaning): ReadResult {
   };
   refuseRegisters(sources, grid.kept);
   const built = buildColumns(ordered, sources, map.sign === 'leadingPositive');
-  const skipped = skippedRows(reader.rows, moments, (row) => sources.some(({ values }) => !Number.isNaN(values[row]!)));
   const notes = [
     ...moments.notes,
     ...(ends && because !== null ? [note('stamps-mark-ends', { because })] : []),
@@ -78,6 +77,8 @@ interface Placed {
   ends: boolean;
   /** what shows that stamps mark ends, where no word says it */
   because: string | null;
+  /** rows of an hour that the clock skipped */
+  skipped: number;
 }
 
 function placedRows(
@@ -89,8 +90,9 @@ function placedRows(
   const values = sources.map((source) => source.values);
   const placed = (ends: boolean) => {
     const moments = momentsOf(rows, rules, ends);
+    const skipped = skippedRows(rows, moments, (row) => values.some((column) => !Number.isNaN(column[row]!)));
     const moment = { utcS: moments.utcS, rowNumber: rows.rowNumber, values, spanS: rows.spanS };
-    return { moments, grid: gridRows(moment, keep) };
+    return { moments, skipped, grid: gridRows(moment, keep) };
   };
   const first = placed(rules.mark === 'end');
   if (rules.mark !== null) return { ...first, ends: rules.mark === 'end', because: null };
