@@ -128,15 +128,15 @@ describe('a remark in words', () => {
       { unit: 'A' },
     );
     expect(remarkSentence(near)).toBe(
-      'Capacitor current of group 2 is near its limit: 85.96\u00a0A against 86\u00a0A, met with 37.3\u00a0kvar connected.',
+      'Near its limit: capacitor current, group 2, 85.96\u00a0A against 86\u00a0A, met with 37.3\u00a0kvar connected.',
     );
-    expect(remarkSubject(near)).toBe('Capacitor current of group 2, met with 37.3\u00a0kvar connected');
+    expect(remarkSubject(near)).toBe('Capacitor current, group 2, met with 37.3\u00a0kvar connected');
     expect(remarkConsequence(near)).toContain('Accept');
   });
 
   it('leaves out parts whose values are absent', () => {
     const bare = remark('limit.exceeded', { duty: 'voltage distortion', value: 9, limit: 8 }, { unit: '%' });
-    expect(remarkSentence(bare)).toBe('Voltage distortion is over its limit: 9.00\u00a0% against 8\u00a0%.');
+    expect(remarkSentence(bare)).toBe('Over its limit: voltage distortion, 9.00\u00a0% against 8\u00a0%.');
   });
 
   it('counts one and many', () => {

@@ -45,7 +45,7 @@ export function setSingleLine(paper: Paper, diagram: SingleLine, width: number):
   const bank = diagram.bank.flatMap((line) => paper.type.wrap([line], ON_CHART, (1 - LOADS_SHARE) * width - 6));
   const below = Math.max(
     ...feeders.map(({ height }) => height),
-    diagram.stages.length > 0 ? 86 + bank.length * leading(ON_CHART) : 0,
+    diagram.stages.length > 0 ? bankTextDrop(diagram) + bank.length * leading(ON_CHART) : 0,
   );
   const height = above + below + leading(AXIS) + 4;
   return {
@@ -63,7 +63,7 @@ export function setSingleLine(paper: Paper, diagram: SingleLine, width: number):
           });
           drawBank(paper, diagram, { box, busY: y + above });
           bank.forEach((line, n) => {
-            paper.type.draw(line, x + width - line.width, y + above + 85 + n * leading(ON_CHART));
+            paper.type.draw(line, x + width - line.width, y + above + bankTextDrop(diagram) + n * leading(ON_CHART));
           });
           paper.type.put([diagram.notEntered], AXIS, x, y + height - 3);
         },
@@ -71,6 +71,12 @@ export function setSingleLine(paper: Paper, diagram: SingleLine, width: number):
       );
     },
   };
+}
+
+/** From the bus down to the first line under the stages [pt]. */
+function bankTextDrop(diagram: SingleLine): number {
+  const stageHeight = diagram.stages.some(({ detuned }) => detuned) ? 40 : 30;
+  return STAGE_DROP + 8 + stageHeight + 25;
 }
 
 interface Place {

@@ -53,8 +53,10 @@ function sentences(paper: Paper, outcome: Outcome, width: number): Paragraph[] {
     after,
   });
   const judged =
-    `${count.judged} rows judged: ${count.clear} within limits, ${count.watch} near a limit, ${count.avoid} over a limit. ` +
-    `${count.notJudged} not judged.`;
+    result.duties.length === 0
+      ? 'Nothing is connected, so no row was judged.'
+      : `${count.judged} rows judged: ${count.clear} within limits, ${count.watch} near a limit, ${count.avoid} over a limit. ` +
+        `${count.notJudged} not judged.`;
   return [
     set(`Proposed: ${proposedWords(outcome)}`, HEADLINE, 5),
     set(verdictSentence(outcome), STRONG, 6, 18),

@@ -33,7 +33,11 @@ export function drawFindings(paper: Paper, outcome: Outcome): void {
   const { duties } = outcome.result;
   const open = duties.filter(({ verdict }) => verdict === null).length;
   const left = open === 0 ? 'none was left unjudged' : `${open} could not be judged`;
-  paper.paragraph([`${duties.length - open} rows were held against a limit; ${left}.`], { style: NOTE });
+  const judged =
+    duties.length === 0
+      ? 'No row was held against a limit.'
+      : `${duties.length - open} rows were held against a limit; ${left}.`;
+  paper.paragraph([judged], { style: NOTE });
 }
 
 function findingRow(paper: Paper, finding: Finding): Cell[] {
