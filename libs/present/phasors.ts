@@ -1,5 +1,5 @@
 import type { Outcome } from '#libs/engine/index.js';
-import type { Chart, Mark } from './chart.js';
+import type { Axis, Chart, Mark } from './chart.js';
 import { formatNumber, formatQuantity, MINUS } from './format-number.js';
 import { formatMoment } from './local-stamp.js';
 import { linearAxis } from './ticks.js';
@@ -39,17 +39,21 @@ export function phasors(outcome: Outcome): Chart {
       `Voltage U points right. The load’s current, ${amperes(before)}, ${angleWords(load)}. ` +
       `The capacitors’ current, ${amperes(moment.bankKvar * perKva)}, leads U by 90° and points up. ` +
       `Their sum, the supply’s current, is ${amperes(after)} and ${angleWords(sum)}.`,
-    x: { ...linearAxis('in phase', 'A', { least: 0, most: reach.x }, 4), to: reach.x * 1.3 },
-    y: {
-      ...linearAxis('lagging downwards', 'A', { least: reach.down, most: reach.up }, 4),
+    x: within(linearAxis('in phase', 'A', { least: 0, most: reach.x }, 4), { from: 0, to: reach.x * 1.3 }),
+    y: within(linearAxis('lagging downwards', 'A', { least: reach.down, most: reach.up }, 4), {
       from: reach.down * 1.12,
       to: reach.up + 0.06 * reach.x,
-    },
+    }),
     equalScales: true,
     series: [],
     marks: arrows(load, sum, moment.bankKvar * perKva),
     table: phasorTable(moment, { load, sum }),
   };
+}
+
+/** The same axis between ends that need not be round. */
+function within(axis: Axis, ends: { from: number; to: number }): Axis {
+  return { ...axis, ...ends, ticks: axis.ticks.filter(({ at }) => at >= ends.from && at <= ends.to) };
 }
 
 /** The worst interval, or the one of greatest need where none misses the target. */
