@@ -27,7 +27,12 @@ export function phasors(outcome: Outcome): Chart {
   const before = Math.hypot(...load);
   const after = Math.hypot(...sum);
   const amperes = (value: number) => formatQuantity(value, 'A');
-  const reach = { x: Math.max(before, after, 1), down: Math.min(load[1], sum[1], 0), up: Math.max(load[1], sum[1], 0) };
+  const reach = {
+    left: Math.min(load[0], sum[0], 0),
+    x: Math.max(before, after, 1),
+    down: Math.min(load[1], sum[1], 0),
+    up: Math.max(load[1], sum[1], 0),
+  };
   return {
     id: 'phasors',
     finding:
@@ -39,7 +44,10 @@ export function phasors(outcome: Outcome): Chart {
       `Voltage U points right. The load’s current, ${amperes(before)}, ${angleWords(load)}. ` +
       `The capacitors’ current, ${amperes(moment.bankKvar * perKva)}, leads U by 90° and points up. ` +
       `Their sum, the supply’s current, is ${amperes(after)} and ${angleWords(sum)}.`,
-    x: within(linearAxis('in phase', 'A', { least: 0, most: reach.x }, 4), { from: 0, to: reach.x * 1.3 }),
+    x: within(linearAxis('in phase', 'A', { least: reach.left, most: reach.x }, 4), {
+      from: reach.left * 1.12,
+      to: reach.x * 1.3,
+    }),
     y: within(linearAxis('lagging downwards', 'A', { least: reach.down, most: reach.up }, 4), {
       from: reach.down * 1.12,
       to: reach.up + 0.06 * reach.x,
