@@ -52,6 +52,7 @@ export * from './plan/robustness.js';
 export * from './plan/scan-site.js';
 export * from './plan/settled-site.js';
 export * from './plan/site.js';
+export * from './plan/with-robustness.js';
 export * from './problem.js';
 export * from './quantity/compensated-sum.js';
 export * from './quantity/minimum.js';

@@ -125,7 +125,7 @@ function levelDifference(level: NetworkLevel, flows: SlowFlow[], nominalV: numbe
   return same ? null : JSON.stringify(expected);
 }
 
-const JUDGED_ELSEWHERE = ['discharge', 'inrush current'];
+const JUDGED_ELSEWHERE = ['discharge', 'inrush current', 'inrush current, exact'];
 
 describe(`duties and network by direct phasors (seed ${SEED})`, () => {
   const cases = Array.from({ length: runs(60, 3000) }, (_, k) => madeCase(SEED + k));

@@ -12,8 +12,8 @@ import {
   UTC_TABLE,
 } from '#libs/engine/index.js';
 import { type Chance, chance } from '../support/chance.js';
-import { driftingLoad, FIRST_S, madeRecord } from '../support/made-record.js';
 import { madeBank, madeGroup } from '../support/made-network.js';
+import { driftingLoad, FIRST_S, madeRecord } from '../support/made-record.js';
 import { madeSite } from '../support/made-site.js';
 import { runs, SEED } from '../support/soak.js';
 

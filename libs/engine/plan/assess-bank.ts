@@ -1,4 +1,3 @@
-import { settleCatalogue } from '../layout/candidates.js';
 import { InputProblem, remark, type Watch } from '../problem.js';
 import type { LoadRecord } from '../record/load-record.js';
 import type { ZoneTable } from '../record/zone-table.js';
@@ -30,7 +29,6 @@ export function assessBank(site: Site, record: LoadRecord, zone: ZoneTable, watc
   const outcome = outcomeOf('assess', study, {
     bank,
     control: settled.control,
-    ratedV: settleCatalogue(site.catalogue, bank.interStageUh).catalogue.ratedV,
     said: { reasons: findings, assumptions: [...assumptions, ...settled.assumptions, ...unused] },
   });
   watch?.report(1);

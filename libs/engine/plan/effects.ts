@@ -4,9 +4,8 @@ import type { Bank } from '../layout/bank.js';
 import { siteNetwork } from '../network/network-model.js';
 import type { Control } from '../operation/control.js';
 import type { Remark } from '../problem.js';
-import { basisOf, overallVerdict } from './judge-basis.js';
+import { basisOf, type Judged, overallVerdict } from './judge-basis.js';
 import type { SettledSite } from './settled-site.js';
-import type { Study } from './study.js';
 
 /** A site and bank with one assumption moved. */
 interface Moved {
@@ -100,7 +99,7 @@ const MOVABLE: readonly Movable[] = [
  * @returns the same lines, with effects where one can be computed; the largest first
  * @source method-robustness
  */
-export function withEffects(assumptions: readonly Remark[], study: Study, bank: Bank, control: Control): Remark[] {
+export function withEffects(assumptions: readonly Remark[], study: Judged, bank: Bank, control: Control): Remark[] {
   if (bank.groups.length === 0) return [...assumptions];
   const now: Moved = { site: study.site, bank };
   const present = judged(study, control, now);
@@ -121,13 +120,16 @@ function weight({ effect }: Remark): number {
   return effect === null ? -1 : (effect.changesVerdict ? 1e6 : 0) + effect.high - effect.low;
 }
 
-interface Judged {
+interface Weighed {
   verdict: Verdict;
   /** ratio to its limit by duty */
   ratios: Map<string, number>;
 }
 
-function mostMoved(present: Judged['ratios'], ends: readonly Judged[]): { figure: string; low: number; high: number } {
+function mostMoved(
+  present: Weighed['ratios'],
+  ends: readonly Weighed[],
+): { figure: string; low: number; high: number } {
   let most = { figure: '', low: 0, high: 0 };
   for (const [duty, ratio] of present) {
     const reached = [ratio, ...ends.flatMap(({ ratios }) => ratios.get(duty) ?? [])];
@@ -138,7 +140,7 @@ function mostMoved(present: Judged['ratios'], ends: readonly Judged[]): { figure
   return most;
 }
 
-function judged(study: Study, control: Control, { site, bank }: Moved): Judged {
+function judged(study: Judged, control: Control, { site, bank }: Moved): Weighed {
   const { supply, loads, nominalV, topology } = site;
   const model = siteNetwork(supply, loads, { nominalV, loadA: study.model.loadA, topology });
   const basis = { ...basisOf(study, control), voltages: { nominalV, highestV: site.highestV }, supply, loads };

@@ -2,8 +2,15 @@ import { type JudgeBasis, type Judgement, judgeBank } from '../duty/judge-bank.j
 import { graver, type Verdict } from '../duty/rules.js';
 import type { Bank } from '../layout/bank.js';
 import { bankLevels } from '../layout/levels.js';
+import type { NetworkModel } from '../network/network-model.js';
 import type { Control } from '../operation/control.js';
-import type { Study } from './study.js';
+import type { SettledSite } from './settled-site.js';
+
+/** What judging needs of a study: the settled site and its network. */
+export interface Judged {
+  site: SettledSite;
+  model: NetworkModel;
+}
 
 /**
  * What a bank on this study is judged by.
@@ -11,7 +18,7 @@ import type { Study } from './study.js';
  * @param control settings
  * @returns rules, voltages, supply, loads and delay
  */
-export function basisOf(study: Study, control: Control): JudgeBasis {
+export function basisOf(study: Judged, control: Control): JudgeBasis {
   const { site } = study;
   return {
     rules: site.rules,
@@ -32,7 +39,7 @@ export function basisOf(study: Study, control: Control): JudgeBasis {
  * @returns judgement
  * @source method-limits
  */
-export function judge(study: Study, bank: Bank, control: Control): Judgement {
+export function judge(study: Judged, bank: Bank, control: Control): Judgement {
   return judgeBank(study.model, bank, bankLevels(bank, study.site.nominalV), basisOf(study, control));
 }
 
@@ -43,6 +50,6 @@ export function judge(study: Study, bank: Bank, control: Control): Judgement {
  * @returns overall verdict
  * @source method-controller
  */
-export function overallVerdict(study: Study, judgement: { verdict: Verdict }): Verdict {
+export function overallVerdict(study: Judged, judgement: { verdict: Verdict }): Verdict {
   return study.site.recordedBank.state === 'unknown' ? graver(judgement.verdict, 'watch') : judgement.verdict;
 }

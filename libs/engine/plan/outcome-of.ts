@@ -6,14 +6,11 @@ import type { Control } from '../operation/control.js';
 import { summarizeOperation } from '../operation/operation.js';
 import type { Remark } from '../problem.js';
 import { cautions } from './cautions.js';
-import { withEffects } from './effects.js';
 import { figures } from './figures.js';
 import { basisOf, judge, overallVerdict } from './judge-basis.js';
 import type { Outcome, Rival } from './outcome.js';
-import { reactorTrials } from './reactor-choice.js';
 import { reasons } from './reasons.js';
 import type { Result } from './result.js';
-import { robustness } from './robustness.js';
 import { type Operated, operate, type Study } from './study.js';
 
 /** Reactor ratio of the comparison where the bank is plain [%]. */
@@ -36,7 +33,7 @@ export interface Said {
 export function outcomeOf(
   kind: Outcome['kind'],
   study: Study,
-  choice: { bank: Bank; control: Control; said: Said; ratedV: readonly number[] },
+  choice: { bank: Bank; control: Control; said: Said },
 ): Outcome {
   const { bank, control, said } = choice;
   const levels = bankLevels(bank, study.site.nominalV);
@@ -57,12 +54,12 @@ export function outcomeOf(
     charge: { stages: judgement.charge },
     inrush: { stages: judgement.inrush },
     conductorMinA,
-    robustness: bank.groups.length === 0 ? null : robustness(study, bank, control),
-    reactorTrials: reactorTrials(study, bank, control, choice.ratedV),
+    robustness: null,
+    reactorTrials: [],
     money: null,
     verdict: overallVerdict(study, judgement),
     reasons: [...said.reasons, ...reasons(study, bank, operated, judgement)],
-    assumptions: withEffects([...study.assumptions, ...said.assumptions], study, bank, control),
+    assumptions: [...study.assumptions, ...said.assumptions],
     cautions: cautions(judgement),
     figures: [],
   };
@@ -75,6 +72,7 @@ export function outcomeOf(
     bank,
     result,
     series: series(study, operated),
+    loadA: study.model.loadA,
     margins: marginMap(study.model, bank, levels, basisOf(study, control)),
     rival: rivalOf(study, bank, control, result.verdict),
   };

@@ -44,6 +44,8 @@ export interface Outcome {
   bank: Bank;
   result: Result;
   series: OperationSeries;
+  /** I_L, the load current distortion is held against [A] */
+  loadA: number;
   margins: MarginMap;
   rival: Rival | null;
 }

@@ -31,7 +31,7 @@ export function planBank(site: Site, record: LoadRecord, zone: ZoneTable, watch?
   if (meetsTarget(without, study.site.targetPowerFactor)) {
     const { control, assumptions } = settleControl(site.control, nothing, study.site);
     const said = { reasons: metAlready(study), assumptions: [...assumptions, ...inputLines(site, [])] };
-    const outcome = outcomeOf('plan', study, { bank: nothing, control, said, ratedV: [] });
+    const outcome = outcomeOf('plan', study, { bank: nothing, control, said });
     watch?.report(1);
     return outcome;
   }
@@ -40,7 +40,6 @@ export function planBank(site: Site, record: LoadRecord, zone: ZoneTable, watch?
   const bank = chosen?.bank ?? nothing;
   const outcome = outcomeOf('plan', study, {
     bank,
-    ratedV: catalogue.ratedV,
     control: chosen?.control ?? settleControl(site.control, bank, study.site).control,
     said: {
       reasons: chosen === null ? [remark('layout.noCandidate', {}, { path: 'catalogue' })] : nearestReasons(chosen),

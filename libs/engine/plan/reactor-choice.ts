@@ -7,8 +7,7 @@ import { bankColumn, busColumns, seenSquareInto } from '../network/bus-columns.j
 import { PeakFinder } from '../network/peaks.js';
 import { stageAdmittance, stageBranch } from '../network/stage-admittance.js';
 import type { Control } from '../operation/control.js';
-import { basisOf, overallVerdict } from './judge-basis.js';
-import type { Study } from './study.js';
+import { basisOf, type Judged, overallVerdict } from './judge-basis.js';
 
 /** Reactor ratios that are tried beside the bank's own [%]; common practice, no source. */
 export const TRIED_REACTOR_PCT = [0, 5.67, 7, 12.5, 14] as const;
@@ -43,7 +42,7 @@ export interface ReactorTrial {
  * @returns one row a ratio, ascending; the bank's own marked
  * @source method-network
  */
-export function reactorTrials(study: Study, bank: Bank, control: Control, ratedV: readonly number[]): ReactorTrial[] {
+export function reactorTrials(study: Judged, bank: Bank, control: Control, ratedV: readonly number[]): ReactorTrial[] {
   const own = new Set(bank.groups.map(({ reactorPct }) => reactorPct));
   if (own.size !== 1) return [];
   const ownPct = [...own][0]!;
@@ -59,7 +58,7 @@ export function reactorTrials(study: Study, bank: Bank, control: Control, ratedV
 }
 
 // Fundamental voltage alone with a twentieth to spare, as the layout's own rule has it.
-function voltageFor(study: Study, reactorPct: number, ratedV: readonly number[]): number {
+function voltageFor(study: Judged, reactorPct: number, ratedV: readonly number[]): number {
   const { nominalV, highestV } = study.site;
   const rise = 1 / (1 - (1.1 * 1.03 * reactorPct) / 100);
   const needV = Math.max((nominalV * rise) / 0.95, (highestV * rise) / 1.1 / 0.95);
@@ -67,7 +66,7 @@ function voltageFor(study: Study, reactorPct: number, ratedV: readonly number[])
 }
 
 function trial(
-  study: Study,
+  study: Judged,
   bank: Bank,
   control: Control,
   head: Pick<ReactorTrial, 'reactorPct' | 'ratedV' | 'chosen'>,
@@ -94,7 +93,7 @@ function trial(
 }
 
 // What is left of a signal behind the source: |Z|/|Z₀| at its frequency, the least over levels and corners.
-function rippleShare(study: Study, bank: Bank, vectors: readonly Int32Array[]): number | null {
+function rippleShare(study: Judged, bank: Bank, vectors: readonly Int32Array[]): number | null {
   const { rippleHz } = study.site.supply;
   if (rippleHz === null) return null;
   const ordersH = Float64Array.of(rippleHz / study.site.frequencyHz);

@@ -25,9 +25,9 @@ export interface Result {
   charge: { stages: ChargeStage[] };
   inrush: { stages: InrushStage[] };
   conductorMinA: number;
-  /** how firm the verdict is; null for an empty bank */
+  /** how firm the verdict is; null for an empty bank, and until it is asked for */
   robustness: Robustness | null;
-  /** the bank's stages with the customary reactor ratios; empty where its groups differ in theirs */
+  /** the bank's stages with the customary reactor ratios; empty where its groups differ in theirs, and until asked for */
   reactorTrials: ReactorTrial[];
   money: null;
   verdict: Verdict;

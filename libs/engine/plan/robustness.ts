@@ -4,9 +4,8 @@ import type { Bank } from '../layout/bank.js';
 import type { Loads } from '../network/loads.js';
 import { siteNetwork } from '../network/network-model.js';
 import type { Control } from '../operation/control.js';
-import { basisOf, overallVerdict } from './judge-basis.js';
+import { basisOf, type Judged, overallVerdict } from './judge-basis.js';
 import type { SettledSite } from './settled-site.js';
-import type { Study } from './study.js';
 
 /** What is moved to see how far the verdict stands. */
 export const MOVED_QUANTITIES = ['fault level', 'load', 'background', 'capacitance'] as const;
@@ -61,7 +60,7 @@ const CLOSED_IN = 1e-3;
  * @returns ranges, and the bank with one stage of each group out
  * @source method-robustness
  */
-export function robustness(study: Study, bank: Bank, control: Control): Robustness {
+export function robustness(study: Judged, bank: Bank, control: Control): Robustness {
   const present = overallVerdict(study, judgeMoved(study, bank, control, { quantity: 'load', factor: 1 }));
   return {
     ranges: MOVED_QUANTITIES.filter((quantity) => applies(study.site, quantity)).map((quantity) => {
@@ -113,7 +112,7 @@ function changeTowards(
 
 // The bank judged with one quantity moved; the record itself is not simulated again, since duties rest on the network.
 function judgeMoved(
-  study: Study,
+  study: Judged,
   bank: Bank,
   control: Control,
   { quantity, factor }: { quantity: MovedQuantity; factor: number },
@@ -161,7 +160,7 @@ export function withCapacitance(bank: Bank, factor: number): Bank {
   };
 }
 
-function stageOut(study: Study, bank: Bank, control: Control, g: number): StageOut {
+function stageOut(study: Judged, bank: Bank, control: Control, g: number): StageOut {
   const groups = bank.groups.flatMap((group, k) => {
     if (k !== g) return [group];
     return group.count > 1 ? [{ ...group, count: group.count - 1 }] : [];
