@@ -60,6 +60,8 @@ describe('a column name', () => {
     'THD (%)',
     'Cumulative energy (kWh)',
     'Tariff',
+    'Active energy (MJ)',
+    'Active power [hp]',
     'Temperature',
     'Quality',
     '',
