@@ -24,13 +24,14 @@ export class SlowRefusal extends Error {}
  */
 export function readSlowly(bytes: Uint8Array, dialect: Dialect): { intervalS: number; rows: Map<number, SlowRow> } {
   const { data, errors } = Papa.parse<string[]>(textOf(bytes), { delimiter: dialect.delimiter, newline: '\n' });
-  const broken = errors.find(({ type }) => type === 'Quotes');
-  if (broken !== undefined) throw new SlowRefusal(broken.message);
   const table = data.map((cells) => cells.map((cell) => cell.trim()));
   const headerAt = table.findIndex(
-    (cells) => cells.some((cell) => UNIT.test(cell)) && !cells.some((cell) => /^\d/.test(cell)),
+    (cells) =>
+      cells.some((cell) => UNIT.test(cell)) && !cells.some((cell) => /^[\d.,]+$|^\d+[-/.]\d+[-/.]\d/.test(cell)),
   );
   if (headerAt < 0) throw new SlowRefusal('no header');
+  const broken = errors.find(({ type, row = 0 }) => type === 'Quotes' && row >= headerAt);
+  if (broken !== undefined) throw new SlowRefusal(broken.message);
   const header = table[headerAt]!.map((name) => name.normalize('NFD').replace(/\p{M}/gu, ''));
   const columns = columnsOf(header, table.slice(headerAt + 1), dialect);
   const body = table
@@ -63,7 +64,7 @@ interface Columns {
   signed: Column | null;
 }
 
-const UNIT = /([kM]?)(W|var)(h?)(?:$|[^a-z])/i;
+const UNIT = /(?:(?<![a-z])|(?=[kM]))([kM]?)(W|var)(h?)(?:$|[^a-z])/i;
 
 function columnsOf(header: string[], body: string[][], { dates }: Dialect): Columns {
   const find = (fits: (name: string) => boolean) => {
@@ -72,7 +73,9 @@ function columnsOf(header: string[], body: string[][], { dates }: Dialect): Colu
     return found.length === 0 ? null : columnOf(header[found[0]!]!, found[0]!);
   };
   const isReactive = (name: string) => /reactive|var/i.test(name);
-  const kw = find((name) => UNIT.test(name) && !isReactive(name));
+  const kw =
+    find((name) => UNIT.test(name) && !isReactive(name)) ??
+    find((name) => /usage|active/i.test(name) && !isReactive(name));
   const lagging = find((name) => /lag/i.test(name));
   const leading = find((name) => /lead/i.test(name));
   const signed = find((name) => UNIT.test(name) && isReactive(name) && !/lag|lead/i.test(name));

@@ -60,8 +60,6 @@ describe('a column name', () => {
     'THD (%)',
     'Cumulative energy (kWh)',
     'Tariff',
-    'Active energy (MJ)',
-    'Active power [hp]',
     'Temperature',
     'Quality',
     '',
@@ -93,6 +91,18 @@ describe('a column name', () => {
       zoneOf('Time GMT-05:30'),
       zoneOf('Time'),
     ]).toEqual(['UTC', 'UTC', '+01:00', '-05:30', null]);
+  });
+
+  it('knows a unit that it can’t read from a word of the trade', () => {
+    const isForeign = (name: string) => readHeaderColumn(name, 0).foreignUnit;
+    expect(['Active energy (MJ)', 'Active power [hp]', 'Leading reactive (kvrah)'].map(isForeign)).toEqual([
+      true,
+      true,
+      true,
+    ]);
+    expect(['Active energy (import)', 'kWh (total)', 'Active power', 'Time (UTC)'].map(isForeign)).toEqual(
+      Array(4).fill(false),
+    );
   });
 
   it('remarks on reactive power in kilowatt, which can only be kvar', () => {

@@ -8,6 +8,8 @@ export interface HeaderColumn {
   index: number;
   name: string;
   unit: ReadUnit | null;
+  /** the name holds a unit, and it is none that is read */
+  foreignUnit: boolean;
   /** what the column holds, or null where the reader has no use for it */
   role: MeterColumn | null;
   /** which end of the interval a time column marks */
@@ -30,13 +32,13 @@ export interface HeaderColumn {
 export function readHeaderColumn(name: string, index: number): HeaderColumn {
   const { unit, rest } = findUnit(name);
   const words = [...wordsOf(rest), ...signWords(rest)];
-  const held = roleOf(words, unit);
-  const measured = held !== 'time' && held !== 'standby';
-  const role = measured && unit === null && hasForeignUnit(name) ? null : held;
+  const role = roleOf(words, unit);
+  const measured = role !== null && role !== 'time' && role !== 'standby';
   return {
     index,
     name,
     unit,
+    foreignUnit: measured && unit === null && hasForeignUnit(name),
     role,
     mark: role === 'time' ? markOf(words) : null,
     zone: role === 'time' ? zoneOf(name) : null,
