@@ -1,6 +1,7 @@
 import type { ComplexColumn } from './bus-admittance.js';
 import { type NetworkModel, tableAt } from './network-model.js';
 import { nodalTable } from './nodal-impedance.js';
+import { LEAST_SIEMENS } from './scan-into.js';
 
 /**
  * What a bus and the bank's bus know of each other with the bank out, over orders. Connecting the bank is a rank-1
@@ -76,7 +77,7 @@ export function seenSquareInto(columns: BusColumns, bank: ComplexColumn, out: Fl
     for (let i = 0; i < out.length; i++) {
       const re = gRe[i]! + bank.re[i]!;
       const im = gIm[i]! + bank.im[i]!;
-      out[i] = re * re + im * im;
+      out[i] = Math.max(LEAST_SIEMENS * LEAST_SIEMENS, re * re + im * im);
     }
     return;
   }
@@ -89,7 +90,7 @@ export function seenSquareInto(columns: BusColumns, bank: ComplexColumn, out: Fl
     const aIm = gRe[i]! * bank.im[i]! + gIm[i]! * bank.re[i]!;
     const sRe = gRe[i]! + bank.re[i]!;
     const sIm = gIm[i]! + bank.im[i]!;
-    const square = sRe * sRe + sIm * sIm;
+    const square = Math.max(LEAST_SIEMENS * LEAST_SIEMENS, sRe * sRe + sIm * sIm);
     const fRe = (aRe * sRe + aIm * sIm) / square;
     const fIm = (aIm * sRe - aRe * sIm) / square;
     const zRe = self.re[i]! - (tRe * fRe - tIm * fIm);

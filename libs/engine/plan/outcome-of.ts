@@ -20,6 +20,8 @@ const RIVAL_REACTOR_PCT = 7;
 export interface Said {
   reasons: Remark[];
   assumptions: Remark[];
+  /** no better than this, whatever its figures say; `clear` where absent */
+  atBest?: Verdict;
 }
 
 /**
@@ -57,7 +59,7 @@ export function outcomeOf(
     robustness: null,
     reactorTrials: [],
     money: null,
-    verdict: overallVerdict(study, judgement),
+    verdict: graver(overallVerdict(study, judgement), said.atBest ?? 'clear'),
     reasons: [...said.reasons, ...reasons(study, bank, operated, judgement)],
     assumptions: [...study.assumptions, ...said.assumptions],
     cautions: cautions(judgement),

@@ -152,7 +152,9 @@ function settleLoads(site: Site, record: LoadRecord | null, defaults: Defaults):
   // Motors and loads listed in a network damp already: the mean of the record would count them twice.
   const listed = (site.network?.motors ?? []).length + (site.network?.resistive ?? []).length > 0;
   const meanKw = record === null || listed ? 0 : Math.max(0, compensatedSum(record.activeKw) / record.activeKw.length);
-  const max = defaults.take(loads?.dampingKw?.max, meanKw, 'loads.dampingKw.max', 'kW');
+  // A stated minimum above the mean is the user's own, and the maximum can't be less.
+  const most = Math.max(meanKw, loads?.dampingKw?.min ?? 0);
+  const max = defaults.take(loads?.dampingKw?.max, most, 'loads.dampingKw.max', 'kW');
   if (loads?.distorting?.length === 0) defaults.note('loads.distorting.none', 'loads.distorting', {});
   if (loads?.backgroundPct?.length === 0) defaults.note('loads.backgroundPct.none', 'loads.backgroundPct', {});
   return {
