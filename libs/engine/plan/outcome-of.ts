@@ -1,5 +1,5 @@
 import { marginMap } from '../duty/margin-map.js';
-import { CAPACITOR_RULES, type Verdict } from '../duty/rules.js';
+import { CAPACITOR_RULES, graver, type Verdict } from '../duty/rules.js';
 import type { Bank } from '../layout/bank.js';
 import { bankLevels, summarizeBank } from '../layout/levels.js';
 import type { Control } from '../operation/control.js';
