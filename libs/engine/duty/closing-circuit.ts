@@ -100,11 +100,7 @@ function greatest(terms: readonly Term[], untilS: number): Found {
 /** Samples between two looks at which terms still count. */
 const BLOCK = 512;
 
-function marched(
-  terms: readonly Term[],
-  { fromS, stepS }: { fromS: number; stepS: number },
-  best: Found,
-): Found {
+function marched(terms: readonly Term[], { fromS, stepS }: { fromS: number; stepS: number }, best: Found): Found {
   const now = terms.map(({ s, c }) => cMultiply(c, cExp(s, fromS)));
   const turn = terms.map(({ s }) => cExp(s, stepS));
   let square = best.peakA * best.peakA;

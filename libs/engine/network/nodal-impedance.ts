@@ -69,8 +69,8 @@ function addBranch(y: Float64Array, n: number, branch: { from: number; to: numbe
 }
 
 /**
- * Inverse of a complex symmetric matrix by elimination without exchange: an admittance matrix of passive branches has
- * a positive real part, so every pivot is safe; symmetry is restored at the end to the last digit.
+ * Inverse of a complex symmetric matrix by elimination, rows exchanged for the greatest pivot: near a resonance a bus's
+ * own admittance all but vanishes beside those to its neighbours. Symmetry is restored at the end to the last digit.
  * @param y matrix, n × n × 2, destroyed
  * @param n rows
  * @param out receives the inverse
@@ -81,21 +81,12 @@ export function invertInto(y: Float64Array, n: number, out: Float64Array, offset
   for (let k = 0; k < 2 * n * n; k++) out[offset + k] = 0;
   for (let k = 0; k < n; k++) out[offset + 2 * (k * n + k)] = 1;
   for (let pivot = 0; pivot < n; pivot++) {
-    const at = 2 * (pivot * n + pivot);
-    const square = y[at]! * y[at]! + y[at + 1]! * y[at + 1]!;
-    const pRe = y[at]! / square;
-    const pIm = -y[at + 1]! / square;
-    const factor = { n, fRe: pRe, fIm: pIm };
-    scaleRow(y, 2 * pivot * n, factor);
-    scaleRow(out, offset + 2 * pivot * n, factor);
-    for (let row = 0; row < n; row++) {
-      if (row === pivot) continue;
-      const fRe = y[2 * (row * n + pivot)]!;
-      const fIm = y[2 * (row * n + pivot) + 1]!;
-      if (fRe === 0 && fIm === 0) continue;
-      subtractRow(y, 2 * row * n, 2 * pivot * n, { n, fRe, fIm });
-      subtractRow(out, offset + 2 * row * n, offset + 2 * pivot * n, { n, fRe, fIm });
+    const greatest = greatestRow(y, n, pivot);
+    if (greatest !== pivot) {
+      swapRows(y, 2 * n * pivot, 2 * n * greatest, n);
+      swapRows(out, offset + 2 * n * pivot, offset + 2 * n * greatest, n);
     }
+    eliminate(y, n, pivot, { out, offset });
   }
   for (let row = 0; row < n; row++) {
     for (let column = row + 1; column < n; column++) {
@@ -104,6 +95,44 @@ export function invertInto(y: Float64Array, n: number, out: Float64Array, offset
       out[a] = out[b] = (out[a]! + out[b]!) / 2;
       out[a + 1] = out[b + 1] = (out[a + 1]! + out[b + 1]!) / 2;
     }
+  }
+}
+
+function greatestRow(y: Float64Array, n: number, pivot: number): number {
+  let greatest = pivot;
+  let most = -1;
+  for (let row = pivot; row < n; row++) {
+    const at = 2 * (row * n + pivot);
+    const square = y[at]! * y[at]! + y[at + 1]! * y[at + 1]!;
+    if (square <= most) continue;
+    most = square;
+    greatest = row;
+  }
+  return greatest;
+}
+
+function swapRows(m: Float64Array, a: number, b: number, n: number): void {
+  for (let k = 0; k < 2 * n; k++) {
+    const kept = m[a + k]!;
+    m[a + k] = m[b + k]!;
+    m[b + k] = kept;
+  }
+}
+
+function eliminate(y: Float64Array, n: number, pivot: number, inverse: { out: Float64Array; offset: number }): void {
+  const { out, offset } = inverse;
+  const at = 2 * (pivot * n + pivot);
+  const square = y[at]! * y[at]! + y[at + 1]! * y[at + 1]!;
+  const factor = { n, fRe: y[at]! / square, fIm: -y[at + 1]! / square };
+  scaleRow(y, 2 * pivot * n, factor);
+  scaleRow(out, offset + 2 * pivot * n, factor);
+  for (let row = 0; row < n; row++) {
+    if (row === pivot) continue;
+    const fRe = y[2 * (row * n + pivot)]!;
+    const fIm = y[2 * (row * n + pivot) + 1]!;
+    if (fRe === 0 && fIm === 0) continue;
+    subtractRow(y, 2 * row * n, 2 * pivot * n, { n, fRe, fIm });
+    subtractRow(out, offset + 2 * row * n, offset + 2 * pivot * n, { n, fRe, fIm });
   }
 }
 

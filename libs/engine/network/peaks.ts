@@ -1,7 +1,7 @@
 import type { Bank } from '../layout/bank.js';
 import { goldenMinimum } from '../quantity/minimum.js';
 import type { ComplexColumn } from './bus-admittance.js';
-import { type BusColumns, bankColumn, busColumns, seenSquareInto } from './bus-columns.js';
+import { type BusColumns, bankColumn, busColumns, networkColumns, seenSquareInto } from './bus-columns.js';
 import type { CornerCase } from './corners.js';
 import type { NetworkModel } from './network-model.js';
 import { HIGHEST_ORDER_H } from './spectra.js';
@@ -38,7 +38,7 @@ export class PeakFinder {
   readonly #bank: Bank;
   readonly #ordersH: Float64Array;
   readonly #stages: (ComplexColumn[] | undefined)[] = [];
-  readonly #buses: (BusColumns | undefined)[][] = [];
+  readonly #buses: (BusColumns[] | undefined)[] = [];
 
   /**
    * @param model the network without the bank
@@ -110,10 +110,8 @@ export class PeakFinder {
   }
 
   #columns(network: number, bus: number): BusColumns {
-    this.#buses[network] ??= [];
-    const known = this.#buses[network];
-    known[bus] ??= busColumns(this.#model, network, bus, this.#ordersH);
-    return known[bus];
+    this.#buses[network] ??= networkColumns(this.#model, network, this.#ordersH);
+    return this.#buses[network][bus]!;
   }
 
   #squareAt(orderH: number, vector: Int32Array, at: { corner: CornerCase; bus: number }): number {

@@ -1,5 +1,5 @@
 import { bankLevels, type Level } from '../layout/levels.js';
-import { type BusColumns, bankColumn, busColumns, seenSquareInto } from '../network/bus-columns.js';
+import { bankColumn, networkColumns, seenSquareInto } from '../network/bus-columns.js';
 import type { Corner } from '../network/corners.js';
 import { siteNetwork } from '../network/network-model.js';
 import { PeakFinder } from '../network/peaks.js';
@@ -49,15 +49,13 @@ export function scanSite(
   const { ordersH } = options;
   const square = new Float64Array(ordersH.length);
   const exponent = settled.supply.resistanceExponent;
-  const columns = new Map<string, BusColumns>();
+  const columns = model.corners.networks.map((_, network) => networkColumns(model, network, ordersH));
   return {
     levels: model.buses.flatMap((name, bus) =>
       model.corners.corners.map((corner) => {
-        const key = `${bus} ${corner.network}`;
-        if (!columns.has(key)) columns.set(key, busColumns(model, corner.network, bus, ordersH));
         const factors = model.corners.factors[corner.factors]!;
         const stages = bank.groups.map((group) => stageAdmittance(stageBranch(group, factors, exponent), ordersH));
-        seenSquareInto(columns.get(key)!, bankColumn(stages, vector, ordersH.length), square);
+        seenSquareInto(columns[corner.network]![bus]!, bankColumn(stages, vector, ordersH.length), square);
         const peak = finder.greatest(vector, corner, bus);
         return {
           bus: name,
