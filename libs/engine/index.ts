@@ -1,9 +1,12 @@
 // The engine's only door.
 export * from './duty/charge.js';
+export * from './duty/closing-circuit.js';
+export * from './duty/closing-netlist.js';
 export * from './duty/current-limits.js';
 export * from './duty/duty-row.js';
 export * from './duty/inrush.js';
 export * from './duty/judge-bank.js';
+export * from './duty/loop-impedance.js';
 export * from './duty/margin-map.js';
 export * from './duty/network-duties.js';
 export * from './duty/quick-judge.js';
@@ -16,6 +19,7 @@ export * from './layout/levels.js';
 export * from './layout/stage.js';
 export * from './money/papers.js';
 export * from './network/bus-admittance.js';
+export * from './network/bus-flow.js';
 export * from './network/corners.js';
 export * from './network/flow.js';
 export * from './network/loads.js';
@@ -40,6 +44,7 @@ export * from './plan/plan-bank.js';
 export * from './plan/result.js';
 export * from './plan/scan-site.js';
 export * from './plan/site.js';
+export * from './plan/site-netlist.js';
 export * from './problem.js';
 export * from './quantity/compensated-sum.js';
 export * from './quantity/minimum.js';

@@ -1,5 +1,5 @@
 import type { ComplexColumn } from './bus-admittance.js';
-import type { Flow } from './flow.js';
+import type { Flow } from './bus-flow.js';
 import type { NetworkModel, NodalModel } from './network-model.js';
 import { combine } from './summation.js';
 

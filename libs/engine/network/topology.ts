@@ -78,6 +78,7 @@ export interface Cable {
   xOhm: number;
 }
 
+/** A generator behind its subtransient impedance [Ω at the fundamental]. */
 export interface Generator {
   name: string;
   bus: number;
@@ -119,7 +120,11 @@ export interface NetworkState {
 /** Most states that are judged. */
 export const MOST_STATES = 256;
 
-/** The topology of a site with one bus. */
+/**
+ * The topology of a site with one bus.
+ * @param transformers how many feed it; 0 where the source stands at it
+ * @returns a single bus with the bank
+ */
 export function oneBus(transformers: number): Topology {
   return {
     buses: ['main'],
