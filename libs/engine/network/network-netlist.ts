@@ -34,9 +34,10 @@ export function networkNetlist(model: NetworkModel, scene: NetlistScene): string
   const highest = Math.max(...orders) * scene.frequencyHz;
   return [
     netlistComment(scene.title),
-    ...(model.nodal === null ? [] : model.buses.map((name, k) => netlistComment(`bus${k + 1} is ${name}`))),
-    '* One copy of the network an order; read each at the frequency in its comment: a sweep to another makes no sense,',
-    '* since its resistances belong to its own order. 1 A enters at the bank bus, so volts are ohms.',
+    ...model.buses.map((name, k) => netlistComment(`${name}: ${nodeName(model, nodal, nodal.busNode[k]!)}`)),
+    '* Above, each bus and its node; a node ends in its order. One copy of the network an order; read each at the',
+    '* frequency in its comment: a sweep to another makes no sense, since its resistances belong to its own order.',
+    '* 1 A enters at the bus of the bank, so volts are ohms.',
     ...copies.flat(),
     ...orders.slice(0, 1).map(() => `.ac lin ${sweepPoints(orders)} ${number(lowest)} ${number(highest)}`),
     '.end',

@@ -82,3 +82,16 @@ export function chosenCorner({ corners }: NetworkModel, corner: number): CornerC
     },
   ]);
 }
+
+/**
+ * Orders a caller asks for: below the fundamental the growth of resistances has no meaning.
+ * @param ordersH orders
+ * @returns the same
+ * @throws InputProblem naming the first that is no number from 1 on
+ */
+export function chosenOrders(ordersH: Float64Array): Float64Array {
+  const at = ordersH.findIndex((h) => !(h >= 1 && h < Number.POSITIVE_INFINITY));
+  if (at < 0) return ordersH;
+  const problem = { path: `orders[${at}]`, expected: 'an order from 1 on', found: `${ordersH[at]}` };
+  throw new InputProblem([{ code: 'out-of-range', ...problem }]);
+}

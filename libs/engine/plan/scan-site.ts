@@ -2,7 +2,7 @@ import { type BusColumns, bankColumn, networkColumns, seenSquareInto } from '../
 import type { Corner } from '../network/corners.js';
 import { PeakFinder } from '../network/peaks.js';
 import { stageAdmittance, stageBranch } from '../network/stage-admittance.js';
-import { chosenCorner, chosenLevel, networkScene } from './network-scene.js';
+import { chosenCorner, chosenLevel, chosenOrders, networkScene } from './network-scene.js';
 import type { Site } from './site.js';
 
 /** |Z| at the bus over order, in one corner. */
@@ -32,12 +32,12 @@ export interface ScanOptions {
  * @param site validated site
  * @param options level, corner, orders
  * @returns one entry a bus and corner, nominal first
- * @throws InputProblem where no level is within 0.5 kvar of the one asked for, or there is no such corner
+ * @throws InputProblem where no level is within 0.5 kvar of the one asked for, there is no such corner, or an order is below 1
  * @source method-network
  */
 export function scanSite(site: Site, options: ScanOptions): { levels: ScannedLevel[] } {
   const { site: settled, bank, levels, model } = networkScene(site);
-  const { ordersH } = options;
+  const ordersH = chosenOrders(options.ordersH);
   const level = chosenLevel(levels, options.levelKvar);
   const corners = options.corner === undefined ? model.corners.corners : [chosenCorner(model, options.corner)];
   const vector = level.vectors[0]!;

@@ -5,7 +5,7 @@ import { fundamentalOhm } from '../duty/judge-bank.js';
 import type { Corner } from '../network/corners.js';
 import { networkNetlist } from '../network/network-netlist.js';
 import { InputProblem } from '../problem.js';
-import { chosenCorner, chosenLevel, type NetworkScene, networkScene } from './network-scene.js';
+import { chosenCorner, chosenLevel, chosenOrders, type NetworkScene, networkScene } from './network-scene.js';
 import type { ScanOptions } from './scan-site.js';
 import type { Site } from './site.js';
 
@@ -36,7 +36,8 @@ export function siteNetlist(site: Site, options: Partial<ScanOptions>): SiteNetl
   const level = chosenLevel(levels, options.levelKvar);
   const corner = chosenCorner(model, options.corner ?? 0);
   const present = model.excitation.ordersH;
-  const ordersH = options.ordersH ?? (present.length > 0 ? present : Float64Array.from(CUSTOMARY_ORDERS_H));
+  const usual = present.length > 0 ? present : Float64Array.from(CUSTOMARY_ORDERS_H);
+  const ordersH = chosenOrders(options.ordersH ?? usual);
   if (ordersH.length > MOST_ORDERS) {
     const expected = `at most ${MOST_ORDERS} orders, each being a copy of the network`;
     throw new InputProblem([{ code: 'too-large', path: 'orders', expected, found: `${ordersH.length}` }]);
