@@ -1,31 +1,31 @@
 import type { Messages } from './message.js';
 
-const WHERE = '[ of group {group}][ at order {orderH}]';
+const WHERE = '[, group {group}][, order {orderH}]';
 const MET = '[, met with {levelKvar} connected][, fault level {faultLevelMva}][, damping load {dampingKw}]';
 
 /** Why a verdict is what it is. */
 export const REASON_MESSAGES: Messages = {
   'limit.exceeded': {
     level: 'blocks issue',
-    text: `{duty}${WHERE} is over its limit: {value} against {limit}${MET}.`,
+    text: `Over its limit: {duty}${WHERE}, {value} against {limit}${MET}.`,
     subject: `{duty}${WHERE}${MET}`,
     consequence: 'Change the bank or the network until the limit is kept.',
   },
   'limit.near': {
     level: 'to be accepted',
-    text: `{duty}${WHERE} is near its limit: {value} against {limit}${MET}.`,
+    text: `Near its limit: {duty}${WHERE}, {value} against {limit}${MET}.`,
     subject: `{duty}${WHERE}${MET}`,
     consequence: 'Accept the margin, or change the bank.',
   },
   'limit.exceededAlready': {
     level: 'to be accepted',
-    text: `{duty}${WHERE} is exceeded without the bank already: {value} against {limit}${MET}. The bank adds little to it.`,
+    text: `Exceeded without the bank already: {duty}${WHERE}, {value} against {limit}${MET}; the bank adds little to it.`,
     subject: `{duty}${WHERE}${MET}. Exceeded without the bank already.`,
     consequence: 'Settle the distortion at its sources; the bank does not mend it.',
   },
   'inrush.assumedInductance': {
     level: 'to be accepted',
-    text: `{duty}${WHERE} is over its limit with an assumed inductance between stages: {value} against {limit}.`,
+    text: `Over its limit with an assumed inductance between stages: {duty}${WHERE}, {value} against {limit}.`,
     subject: `{duty}${WHERE}${MET}. The inductance between stages is assumed.`,
     consequence: 'Give the inductance between stages, or fit reactors or an inrush-limiting switch.',
   },

@@ -20,6 +20,8 @@ import type { Style } from './typesetter.js';
 const LOADS_SHARE = 0.54;
 const MOST_TRANSFORMERS = 3;
 const ABOVE_BUS = 116;
+/** A name that takes more lines goes by its number in the list of loads. */
+const MOST_NAME_LINES = 3;
 const FEEDER_DROP = 20;
 const STAGE_DROP = 12;
 
@@ -43,7 +45,7 @@ export function setSingleLine(paper: Paper, diagram: SingleLine, width: number):
   const bank = diagram.bank.flatMap((line) => paper.type.wrap([line], ON_CHART, (1 - LOADS_SHARE) * width - 6));
   const below = Math.max(
     ...feeders.map(({ height }) => height),
-    diagram.stages.length > 0 ? 74 + bank.length * leading(ON_CHART) : 0,
+    diagram.stages.length > 0 ? bankTextDrop(diagram) + bank.length * leading(ON_CHART) : 0,
   );
   const height = above + below + leading(AXIS) + 4;
   return {
@@ -61,7 +63,7 @@ export function setSingleLine(paper: Paper, diagram: SingleLine, width: number):
           });
           drawBank(paper, diagram, { box, busY: y + above });
           bank.forEach((line, n) => {
-            paper.type.draw(line, x + width - line.width, y + above + 72 + n * leading(ON_CHART));
+            paper.type.draw(line, x + width - line.width, y + above + bankTextDrop(diagram) + n * leading(ON_CHART));
           });
           paper.type.put([diagram.notEntered], AXIS, x, y + height - 3);
         },
@@ -69,6 +71,12 @@ export function setSingleLine(paper: Paper, diagram: SingleLine, width: number):
       );
     },
   };
+}
+
+/** From the bus down to the first line under the stages [pt]. */
+function bankTextDrop(diagram: SingleLine): number {
+  const stageHeight = diagram.stages.some(({ detuned }) => detuned) ? 40 : 30;
+  return STAGE_DROP + 8 + stageHeight + 25;
 }
 
 interface Place {
@@ -150,7 +158,8 @@ interface SetFeeder {
 
 function setFeeder(paper: Paper, feeder: Feeder, width: number): SetFeeder {
   const { doc, type } = paper;
-  const names = type.wrap([feeder.name], ON_CHART, width - 8);
+  const wrapped = type.wrap([feeder.name], ON_CHART, width - 8);
+  const names = wrapped.length <= MOST_NAME_LINES ? wrapped : type.wrap([feeder.short], ON_CHART, width - 8);
   const details = type.wrap([feeder.detail], AXIS, width - 8);
   const symbolEnd = FEEDER_DROP + 18;
   return {
@@ -183,7 +192,8 @@ function drawBank(paper: Paper, diagram: SingleLine, { box, busY }: Place): void
   const { stages } = diagram;
   if (stages.length === 0) return;
   const area = { x: box.x + LOADS_SHARE * box.width + 8, width: (1 - LOADS_SHARE) * box.width - 8 };
-  const pitch = Math.min(24, area.width / stages.length);
+  const widest = stages.some(({ times }) => times > 1) ? 52 : 24;
+  const pitch = Math.min(widest, area.width / stages.length);
   const first = area.x + area.width - pitch * stages.length + pitch / 2;
   const last = first + pitch * (stages.length - 1);
   const middle = (first + last) / 2;

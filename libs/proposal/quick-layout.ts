@@ -16,8 +16,8 @@ interface Position {
   yOffset: number;
 }
 
-/** Only between letters does the space matter to the eye at these sizes. */
-const BETWEEN_LETTERS = /^\p{L}\p{L}$/u;
+/** The space between letters matters to the eye where one of them is a capital. */
+const KERNED = /^(?:\p{Lu}\p{L}|\p{L}\p{Lu})$/u;
 
 export interface OpenFont {
   layout(text: string, features?: string[]): LaidOut;
@@ -50,7 +50,7 @@ export function layOutQuickly(font: OpenFont): void {
     return known;
   };
   const kern = (pair: string): number => {
-    if (!BETWEEN_LETTERS.test(pair)) return 0;
+    if (!KERNED.test(pair)) return 0;
     let known = kerns.get(pair);
     if (known === undefined) {
       const run = shape(pair);

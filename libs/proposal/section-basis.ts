@@ -9,7 +9,7 @@ import { drawTable } from './table.js';
 /** Documents with their editions, and what each was used for. */
 export function drawBasis(paper: Paper, outcome: Outcome): void {
   const { site } = outcome;
-  paper.heading('3', `Basis of design: ${RULE_SET_WORDS[site.rules]}`);
+  paper.heading('3', `Basis of design: ${RULE_SET_WORDS[site.rules]}`, { keep: 130 });
   paper.paragraph([
     `${formatQuantity(site.nominalV, 'V', 'given')}, at most ${formatQuantity(site.highestV, 'V', 'given')}, ` +
       `${formatNumber(site.frequencyHz, 'given')} Hz. Target power factor ${formatNumber(site.targetPowerFactor, 'given')} ` +
@@ -25,6 +25,31 @@ export function drawBasis(paper: Paper, outcome: Outcome): void {
     columns,
     basisOfDesign(outcome).map(({ rule, edition, usedFor }) => [rule, edition, usedFor]),
   );
+  drawLoads(paper, outcome);
+}
+
+/** The loads that distort, in the order the single-line diagram numbers them. */
+function drawLoads(paper: Paper, { site }: Outcome): void {
+  const { distorting } = site.loads;
+  if (distorting === null || distorting.length === 0) return;
+  const columns = [
+    { head: 'load', share: 8 },
+    { head: 'that distorts', share: 46 },
+    { head: 'fundamental', share: 16, align: 'right' as const },
+    { head: 'harmonic currents, % of it', share: 40 },
+  ];
+  const rows = distorting.map(({ name, fundamentalA, spectrum, orders }, at) => {
+    const given = orders
+      ?.map(({ orderH, pct }) => `order ${formatNumber(orderH, 'given')}: ${formatNumber(pct, 'given')}`)
+      .join(', ');
+    return [
+      String(at + 1),
+      plainName(name),
+      formatQuantity(fundamentalA, 'A', 'given'),
+      given ?? (spectrum ?? '').replaceAll('-', ' '),
+    ];
+  });
+  drawTable(paper, columns, rows);
 }
 
 /** Every value that was taken because none was given, and what settles it. */

@@ -10,7 +10,8 @@ import { drawVerdictMark } from './marks.js';
 import { LABEL, leading, type Paper, rise, STRONG } from './paper.js';
 import { BODY, type Line, type Style } from './typesetter.js';
 
-const TITLE: Style = { ...STRONG, size: 17 };
+/** A long name takes a smaller size, so that the decision stays on the first page. */
+const TITLES: Style[] = [17, 13, 10.5].map((size) => ({ ...STRONG, size }));
 const HEADLINE: Style = { ...STRONG, size: 14.5 };
 const PADDING = 14;
 const BAND = 24;
@@ -20,7 +21,9 @@ const SENTENCE_SHARE = 0.43;
 /** Title and decision box: what is proposed, how it was judged, what it does not cover, and the single-line diagram. */
 export function drawDecision(paper: Paper, outcome: Outcome): void {
   const { site } = outcome;
-  paper.paragraph([`Power-factor correction for ${plainName(site.name)}`], { style: TITLE, tag: 'H1', after: 2 });
+  const title = [`Power-factor correction for ${plainName(site.name)}`];
+  const style = TITLES.find((one) => paper.type.wrap(title, one, paper.width).length <= 3) ?? TITLES.at(-1)!;
+  paper.paragraph(title, { style, tag: 'H1', after: 2 });
   paper.paragraph([boardWords(outcome)], { style: { ...BODY, ink: SOFT }, after: 10 });
   drawBox(paper, outcome);
 }
@@ -50,8 +53,10 @@ function sentences(paper: Paper, outcome: Outcome, width: number): Paragraph[] {
     after,
   });
   const judged =
-    `${count.judged} rows judged: ${count.clear} within limits, ${count.watch} near a limit, ${count.avoid} over a limit. ` +
-    `${count.notJudged} not judged.`;
+    result.duties.length === 0
+      ? 'Nothing is connected, so no row was judged.'
+      : `${count.judged} rows judged: ${count.clear} within limits, ${count.watch} near a limit, ${count.avoid} over a limit. ` +
+        `${count.notJudged} not judged.`;
   return [
     set(`Proposed: ${proposedWords(outcome)}`, HEADLINE, 5),
     set(verdictSentence(outcome), STRONG, 6, 18),
@@ -122,15 +127,30 @@ function drawBox(paper: Paper, outcome: Outcome): void {
   const diagram = setSingleLine(paper, singleLine(outcome), inner.width);
   const band = outcome.result.verdict === 'avoid' ? BAND : 0;
   const upper = Math.max(textHeight, figuresHeight) + 2 * PADDING;
-  const height = band + upper + diagram.height + PADDING;
-  paper.need(height + 4);
+  const whole = band + upper + diagram.height + PADDING;
+  // with the longest of names the diagram takes a box of its own on the next page
+  const apart = whole + 4 > paper.bottom - paper.y;
   const top = paper.y;
   if (band > 0) drawBand(paper, top);
   drawSentences(paper, text, { x: inner.x, y: top + band + PADDING, verdict: outcome.result.verdict });
   const right = { x: inner.x + SENTENCE_SHARE * inner.width, width: (1 - SENTENCE_SHARE) * inner.width };
   drawFigures(paper, figures, { ...right, y: top + band + PADDING, rowHeight });
+  if (apart) {
+    drawFrame(paper, top, band + upper);
+    paper.y = top + band + upper + 14;
+    paper.need(diagram.height + 2 * PADDING);
+    diagram.draw(inner.x, paper.y + PADDING);
+    drawFrame(paper, paper.y, diagram.height + 2 * PADDING);
+    paper.y += diagram.height + 2 * PADDING + 4;
+    return;
+  }
   paper.rule({ y: top + band + upper - 4, from: inner.x, to: inner.x + inner.width, ink: HAIR });
   diagram.draw(inner.x, top + band + upper + 8);
+  drawFrame(paper, top, whole);
+  paper.y = top + whole + 4;
+}
+
+function drawFrame(paper: Paper, top: number, height: number): void {
   paper.artifact(() => {
     const { doc } = paper;
     doc.lineWidth(STROKE.frame).rect(paper.left, top, paper.width, height).stroke(INK);
@@ -140,7 +160,6 @@ function drawBox(paper: Paper, outcome: Outcome): void {
       .lineTo(paper.right + 0.7, top)
       .stroke(INK);
   });
-  paper.y = top + height + 4;
 }
 
 /** Across the box where a limit is exceeded: black, with its mark reversed. */

@@ -1,20 +1,19 @@
 import type { Outcome } from '#libs/engine/index.js';
 import { type Finding, findingCount, findings } from '#libs/present/findings.js';
 import type { FindingLevel } from '#libs/present/message.js';
-import { INK, PAPER, STROKE } from './ink.js';
+import { INK, PAPER, SOFT, STROKE } from './ink.js';
 import { NOTE, type Paper } from './paper.js';
 import { type Cell, type Column, drawTable } from './table.js';
-import { BODY, type Style } from './typesetter.js';
+import { BODY, NEW_LINE, type Piece, type Style } from './typesetter.js';
 
 const STYLE: Style = { ...BODY, size: 9 };
 const COLUMNS: Column[] = [
-  { head: 'level', share: 19 },
-  { head: 'what', share: 44 },
-  { head: 'value', share: 12, align: 'right' },
-  { head: 'limit', share: 12, align: 'right' },
-  { head: 'source', share: 20 },
-  { head: 'consequence', share: 34 },
-  { head: 'accepted', share: 12 },
+  { head: 'level', share: 0, fixed: 63 },
+  { head: 'what, and its source', share: 58 },
+  { head: 'value', share: 0, fixed: 43, align: 'right' },
+  { head: 'limit', share: 0, fixed: 43, align: 'right' },
+  { head: 'consequence', share: 42 },
+  { head: 'accepted', share: 0, fixed: 37 },
 ];
 
 /** What a reviewer has to know, gravest first; each finding to be accepted has a line to sign on. */
@@ -29,18 +28,23 @@ export function drawFindings(paper: Paper, outcome: Outcome): void {
     paper,
     COLUMNS,
     list.map((finding) => findingRow(paper, finding)),
-    { style: STYLE, after: 5 },
+    { style: STYLE, gutter: 10, after: 5 },
   );
   const { duties } = outcome.result;
   const open = duties.filter(({ verdict }) => verdict === null).length;
   const left = open === 0 ? 'none was left unjudged' : `${open} could not be judged`;
-  paper.paragraph([`${duties.length - open} rows were held against a limit; ${left}.`], { style: NOTE });
+  const judged =
+    duties.length === 0
+      ? 'No row was held against a limit.'
+      : `${duties.length - open} rows were held against a limit; ${left}.`;
+  paper.paragraph([judged], { style: NOTE });
 }
 
 function findingRow(paper: Paper, finding: Finding): Cell[] {
   const { level, what, value, limit, source, consequence } = finding;
   const accepted = level === 'to be accepted' || level === 'blocks issue' ? signLine(paper) : '';
-  return [levelCell(paper, level), what, value, limit, source, consequence, accepted];
+  const named: Piece[] = source === '' ? [what] : [what, NEW_LINE, { text: source, ink: SOFT, size: 8.4 }];
+  return [levelCell(paper, level), named, value, limit, consequence, accepted];
 }
 
 /** The more ink, the graver: white on black, a heavy frame, a thin frame, bare. */
@@ -52,7 +56,7 @@ function levelCell(paper: Paper, level: FindingLevel): Cell {
     pieces: [{ text: level, size: style.size, weight: style.weight, ink: style.ink }],
     inset: 4,
     draw({ x, y, height }) {
-      const box = [x, y + 0.2, Math.max(width + 8, 60), height - 0.6] as const;
+      const box = [x, y + 0.2, width + 8, height - 0.6] as const;
       if (blocks) paper.doc.rect(...box).fill(INK);
       else if (level === 'to be accepted')
         paper.doc

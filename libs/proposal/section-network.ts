@@ -1,10 +1,11 @@
-import type { MarginMap, NetworkLevel, Outcome } from '#libs/engine/index.js';
+import type { NetworkLevel, Outcome } from '#libs/engine/index.js';
 import { dutyName } from '#libs/present/figure-words.js';
+import { countWord } from '#libs/present/findings.js';
 import { formatApart, formatNumber, formatQuantity, GAP } from '#libs/present/format-number.js';
 import { impedanceOverOrder } from '#libs/present/impedance-over-order.js';
 import { marginMap } from '#libs/present/margin-map.js';
 import { bankName } from '#libs/present/proposed-words.js';
-import { countDuties, verdictWords } from '#libs/present/verdict-words.js';
+import { countDuties, type DutyCount, verdictWords } from '#libs/present/verdict-words.js';
 import { CELL_HEIGHT, cellsHeight, drawCellKey, drawCells } from './draw-cells.js';
 import {
   CAPTION_LEADING,
@@ -36,19 +37,19 @@ export function drawNetwork(paper: Paper, outcome: Outcome): void {
     drawImpedance(paper, outcome);
     return;
   }
-  const count = countDuties(result.duties);
-  const words =
-    count.avoid > 0
-      ? `${count.avoid} rows over a limit`
-      : count.watch > 0
-        ? `${count.watch} rows near a limit`
-        : 'every row judged is within its limit';
+  const words = dutyWords(countDuties(result.duties));
   paper.heading('9', `Network and duties: ${words}`, { keep: 220 });
   paper.paragraph([networkSentence(outcome)]);
   drawImpedance(paper, outcome);
   drawMargins(paper, outcome);
   drawDuties(paper, outcome);
   drawLevels(paper, outcome);
+}
+
+function dutyWords({ avoid, watch }: DutyCount): string {
+  const rows = (count: number) => `${countWord(count)} ${count === 1 ? 'row' : 'rows'}`;
+  if (avoid > 0) return `${rows(avoid)} over a limit`;
+  return watch > 0 ? `${rows(watch)} near a limit` : 'every row judged is within its limit';
 }
 
 function networkSentence({ result }: Outcome): string {
@@ -97,9 +98,9 @@ function drawMargins(paper: Paper, outcome: Outcome): void {
     paper.paragraph(['No order with a limit is present, so there is no map of margins.'], { style: NOTE });
     return;
   }
-  const maps: Numbered[] = [{ number: '9.3', chart: marginMap(thinned(margins), bankName(bank.groups)) }];
+  const maps: Numbered[] = [{ number: '9.3', chart: marginMap(margins, bankName(bank.groups), MOST_LEVELS) }];
   if (rival !== null)
-    maps.push({ number: '9.4', chart: marginMap(thinned(rival.margins), bankName(rival.bank.groups)) });
+    maps.push({ number: '9.4', chart: marginMap(rival.margins, bankName(rival.bank.groups), MOST_LEVELS) });
   const wide = margins.ordersH.length > 9;
   const spans = rival === null || wide ? [{ x: paper.left, width: paper.width }] : halves(paper);
   if (wide) for (const map of maps) drawMaps(paper, [map], spans);
@@ -135,27 +136,14 @@ function drawMaps(paper: Paper, maps: readonly Numbered[], spans: readonly Span[
   }
 }
 
-/** The lowest and highest level and, between them, those nearest a limit. */
-function thinned(margins: MarginMap): MarginMap {
-  const { levelsKvar, ordersH, sharePct } = margins;
-  if (levelsKvar.length <= MOST_LEVELS) return margins;
-  const last = levelsKvar.length - 1;
-  const byShare = levelsKvar
-    .map((_, at) => at)
-    .slice(1, -1)
-    .sort((a, b) => Math.max(...sharePct[b]!) - Math.max(...sharePct[a]!));
-  const kept = [0, last, ...byShare.slice(0, MOST_LEVELS - 2)].sort((a, b) => a - b);
-  return { ordersH, levelsKvar: kept.map((at) => levelsKvar[at]!), sharePct: kept.map((at) => sharePct[at]!) };
-}
-
 const DUTY_COLUMNS: Column[] = [
-  { head: 'duty', share: 41 },
+  { head: 'duty', share: 43 },
   { head: 'value', share: 14, align: 'right' },
   { head: 'limit', share: 14, align: 'right' },
   { head: 'share', share: 13, align: 'right' },
-  { head: 'met at', share: 17, align: 'right' },
-  { head: 'source', share: 25 },
-  { head: 'verdict', share: 23 },
+  { head: 'met at', share: 16, align: 'right' },
+  { head: 'source', share: 28 },
+  { head: 'verdict', share: 22 },
 ];
 
 function drawDuties(paper: Paper, outcome: Outcome): void {

@@ -222,17 +222,22 @@ function append(line: Line, more: Line, gap: number): void {
   line.width += gap + more.width;
 }
 
-/** Neighbours of one look and font become one stretch. */
+/** Neighbours of one look and font become one stretch; a gap joins only where the same goes on after it. */
 function merged(segments: readonly Segment[]): Segment[] {
   const out: Segment[] = [];
-  for (const segment of segments) {
+  segments.forEach((segment, at) => {
     const last = out.at(-1);
-    if (last !== undefined && last.font === segment.font && sameStyle(last.style, segment.style)) {
+    const goesOn = segment.text !== ' ' || alike(segment, segments[at + 1]);
+    if (last !== undefined && goesOn && alike(last, segment)) {
       last.text += segment.text;
       last.width += segment.width;
     } else out.push({ ...segment });
-  }
+  });
   return out;
+}
+
+function alike(a: Segment, b: Segment | undefined): boolean {
+  return b !== undefined && a.font === b.font && sameStyle(a.style, b.style);
 }
 
 function sameStyle(a: Style, b: Style): boolean {

@@ -181,7 +181,8 @@ function unitOf(quantity: Quantity, column: HeaderColumn, map: MeterMap): ReadUn
   if (unit !== null) return checkedUnit(quantity, column, unit);
   if (quantity === 'voltage') return readUnit('V');
   if (map.quantity === undefined) return null;
-  return readUnit(map.quantity === 'power' ? 'kW' : 'kWh');
+  const active = quantity === 'active' || quantity === 'exported';
+  return readUnit(`${active ? 'kW' : 'kvar'}${map.quantity === 'power' ? '' : 'h'}`);
 }
 
 const FAMILIES: Record<Exclude<Quantity, 'standby'>, readonly string[]> = {

@@ -1,10 +1,10 @@
 import type { MeterMap } from '#libs/contract/meter-map.js';
-import type { Remark } from '#libs/engine/index.js';
+import { InputProblem, type Remark } from '#libs/engine/index.js';
 import type { ReadOptions } from '../meter-format.js';
 import { note } from '../note.js';
 import type { ReadResult } from '../record/close-reading.js';
 import { gridRows, type IntervalGrid } from '../record/interval-grid.js';
-import { buildColumns, type BuiltColumns, type QuantitySource } from '../record/build-columns.js';
+import { buildColumns, type BuiltColumns, QUANTITIES, type QuantitySource } from '../record/build-columns.js';
 import { type Moments, momentsOf, showsEnds, skippedRows, type StampRules } from '../time/moments.js';
 import type { DateOrder } from '../time/stamp-text.js';
 import type { ColumnChoice } from './column-choice.js';
@@ -40,7 +40,7 @@ export function readUnder(file: CsvFile, meaning: CsvMeaning): ReadResult {
   const { reader, map } = file;
   const sources = sourcesOf(file, meaning);
   const rules = stampRules(file, meaning.order);
-  const { moments, grid, ends, because } = placedRows(file, rules, { sources, keep: meaning.keep });
+  const { moments, grid, ends, because, skipped } = placedRows(file, rules, { sources, keep: meaning.keep });
   const shiftS = ends ? grid.intervalS : 0;
   const { utcS } = moments;
   const ordered = {
@@ -49,8 +49,8 @@ export function readUnder(file: CsvFile, meaning: CsvMeaning): ReadResult {
     beginS: (row: number) => utcS[row]! - shiftS,
     rowNumber: reader.rows.rowNumber,
   };
+  refuseRegisters(sources, grid.kept);
   const built = buildColumns(ordered, sources, map.sign === 'leadingPositive');
-  const skipped = skippedRows(reader.rows, moments, (row) => sources.some(({ values }) => !Number.isNaN(values[row]!)));
   const notes = [
     ...moments.notes,
     ...(ends && because !== null ? [note('stamps-mark-ends', { because })] : []),
@@ -77,6 +77,8 @@ interface Placed {
   ends: boolean;
   /** what shows that stamps mark ends, where no word says it */
   because: string | null;
+  /** rows of an hour that the clock skipped */
+  skipped: number;
 }
 
 function placedRows(
@@ -88,8 +90,9 @@ function placedRows(
   const values = sources.map((source) => source.values);
   const placed = (ends: boolean) => {
     const moments = momentsOf(rows, rules, ends);
+    const skipped = skippedRows(rows, moments, (row) => values.some((column) => !Number.isNaN(column[row]!)));
     const moment = { utcS: moments.utcS, rowNumber: rows.rowNumber, values, spanS: rows.spanS };
-    return { moments, grid: gridRows(moment, keep) };
+    return { moments, skipped, grid: gridRows(moment, keep) };
   };
   const first = placed(rules.mark === 'end');
   if (rules.mark !== null) return { ...first, ends: rules.mark === 'end', because: null };
@@ -127,6 +130,25 @@ function valuesUnder({ rows, mark }: RowReader, decimal: DecimalSign | null): Fl
   return values;
 }
 
+/** Rows from which on a column that never falls is taken for a register's reading. */
+const REGISTER_ROWS = 200;
+
+/** Energies of intervals rise and fall; a column that only rises, in small steps, is the reading of a register. */
+function refuseRegisters(sources: readonly QuantitySource[], kept: Int32Array): void {
+  for (const { values, energy, column } of sources) {
+    if (!energy) continue;
+    const known = Array.from(kept, (row) => values[row]!).filter((value) => !Number.isNaN(value));
+    const first = known[0] ?? 0;
+    const rise = (known[known.length - 1] ?? 0) - first;
+    if (known.length < REGISTER_ROWS || rise <= 0 || first * (known.length - 1) < 10 * rise) continue;
+    if (known.some((value, i) => i > 0 && value < known[i - 1]!)) continue;
+    const expected = 'the energy of each interval';
+    throw new InputProblem([
+      { code: 'not-supported-yet', column, expected, found: 'the rising reading of a register' },
+    ]);
+  }
+}
+
 function rowNotes(
   grid: IntervalGrid,
   built: BuiltColumns,
@@ -144,8 +166,10 @@ function rowNotes(
 
 function quantityNotes({ layout, map }: CsvFile, choice: ColumnChoice, built: BuiltColumns): Remark[] {
   const leadingPositive = map.sign === 'leadingPositive';
-  const notes: Remark[] = [];
   const named = (column: number) => layout.names[column] || `column ${column + 1}`;
+  const inOrder = choice.columns.toSorted((a, b) => QUANTITIES.indexOf(a.quantity) - QUANTITIES.indexOf(b.quantity));
+  const read = inOrder.map(({ quantity, column }) => `${quantity} ${named(column)}`);
+  const notes: Remark[] = [note('file-read-as', { format: 'csv', columns: read.join('; ') })];
   const listed = (columns: number[]) => columns.map(named).join(', ');
   const mega = choice.columns.filter(({ unit }) => unit.smallMega).map(({ column }) => column);
   if (mega.length > 0) notes.push(note('unit-read-as-mega', { columns: listed(mega) }));

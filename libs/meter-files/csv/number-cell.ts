@@ -20,7 +20,7 @@ const COMMA = 0x2c;
 const SPACE = 0x20;
 /** Up to 15 digits are exact in a double, and so is a power of ten up to 22: one division rounds once, correctly. */
 const EXACT_DIGITS = 15;
-const TENTHS = Float64Array.from({ length: 23 }, (_, power) => 10 ** power);
+export const TENTHS: Float64Array = Float64Array.from({ length: 23 }, (_, power) => 10 ** power);
 
 /**
  * Reads the number in a cell, correctly rounded.

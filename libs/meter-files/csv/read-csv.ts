@@ -3,8 +3,8 @@ import type { MeterBytes } from '../meter-bytes.js';
 import type { MeterReading, ReadOptions } from '../meter-format.js';
 import { note } from '../note.js';
 import { closeReading } from '../record/close-reading.js';
-import { QUANTITIES } from '../record/build-columns.js';
 import { type CsvLayout, findLayout, looksTabular } from './csv-layout.js';
+import { QuickRows } from './quick-rows.js';
 import { LONGEST_ROW_BYTES, RowBuffer } from './row-buffer.js';
 import { RowCells } from './row-cells.js';
 import { RowReader } from './row-reader.js';
@@ -17,15 +17,16 @@ const VIEW_BYTES = 262_144;
  * Reads delimited text.
  * @param source the file
  * @param options what is said about it
+ * @param lane the general lane alone gives the same record, slower
  * @returns the record and its quality
  * @throws InputProblem where it can't be read, Question where it can be read in several ways
  */
-export async function readCsv(source: MeterBytes, options: ReadOptions): Promise<MeterReading> {
+export async function readCsv(source: MeterBytes, options: ReadOptions, lane: Lane = 'quick'): Promise<MeterReading> {
   const map = options.map ?? {};
   const buffer = new RowBuffer(source);
   const layout = await layoutOf(buffer, options);
   const reader = new RowReader(layout, map);
-  await readRows(buffer, layout, reader);
+  await readRows(buffer, layout, reader, lane);
   reader.problems.refuse();
   if (reader.rows.count === 0) {
     throw new InputProblem([{ code: 'empty-file', expected: 'rows of data under the header', found: 'none' }]);
@@ -43,6 +44,7 @@ async function layoutOf(buffer: RowBuffer, { map = {} }: ReadOptions): Promise<C
     tabular ||= looksTabular(buffer);
     if (buffer.ended) break;
     dropRows(buffer);
+    await buffer.more();
   }
   if (tabular) {
     const expected = 'a header row that names the columns, or a map that numbers them';
@@ -65,20 +67,38 @@ function dropRows(buffer: RowBuffer): void {
   buffer.start = keep + 1;
 }
 
-async function readRows(buffer: RowBuffer, layout: CsvLayout, reader: RowReader): Promise<void> {
+/** Which lane the rows go through: the quick one as far as it goes, or the general one alone. */
+export type Lane = 'quick' | 'general';
+
+async function readRows(buffer: RowBuffer, layout: CsvLayout, reader: RowReader, lane: Lane): Promise<void> {
+  const plan = lane === 'general' ? null : reader.quickPlan();
+  const quick = plan === null ? null : new QuickRows(reader.rows, plan);
   const cells = new RowCells();
-  const marks = { delimiter: layout.delimiter, rowEnd: buffer.rowEnd };
   do {
-    for (;;) {
-      const next = cells.split(buffer.bytes, buffer.start, buffer.end, marks);
-      if (next < 0) break;
-      buffer.start = next;
-      buffer.rowsBefore++;
-      if (buffer.rowsBefore > layout.lastHeaderRow) reader.take(cells, buffer.rowsBefore);
-    }
+    takeRows(buffer, layout, { reader, quick, cells });
     if (buffer.end - buffer.start > LONGEST_ROW_BYTES) buffer.refuseEndlessRow();
   } while (await buffer.more());
   if (buffer.end > buffer.start) refuseOpenQuote(buffer.rowsBefore + 1);
+}
+
+/** Takes every whole row of the buffer: as far as it goes by the quick lane, the row that stops it by the general one. */
+function takeRows(
+  buffer: RowBuffer,
+  layout: CsvLayout,
+  { reader, quick, cells }: { reader: RowReader; quick: QuickRows | null; cells: RowCells },
+): void {
+  const marks = { delimiter: layout.delimiter, rowEnd: buffer.rowEnd };
+  for (;;) {
+    quick?.takeFrom(buffer, reader.mark.sign);
+    const next = cells.split(buffer.bytes, buffer.start, buffer.end, marks);
+    if (next < 0) return;
+    buffer.start = next;
+    buffer.rowsBefore++;
+    if (buffer.rowsBefore <= layout.lastHeaderRow) continue;
+    const before = reader.rows.count;
+    reader.take(cells, buffer.rowsBefore);
+    if (reader.rows.count > before) quick?.learn(cells);
+  }
 }
 
 function refuseOpenQuote(row: number): never {
@@ -87,11 +107,7 @@ function refuseOpenQuote(row: number): never {
 }
 
 function fileNotes(source: MeterBytes, layout: CsvLayout, { headers, totals }: RowReader): Remark[] {
-  const [choice] = layout.choices;
-  const columns = choice!.columns.toSorted((a, b) => QUANTITIES.indexOf(a.quantity) - QUANTITIES.indexOf(b.quantity));
-  const named = columns.map(({ quantity, column }) => `${quantity} ${layout.names[column] || column + 1}`);
   return [
-    ...(layout.choices.length === 1 ? [note('file-read-as', { format: 'csv', columns: named.join('; ') })] : []),
     ...(source.encoding === 'utf-8' ? [] : [note('encoding-converted', { encoding: source.encoding })]),
     ...(layout.headerRow > 1 ? [note('rows-before-header', { rows: layout.headerRow - 1 })] : []),
     ...(headers.count > 0 ? [note('header-repeated', { rows: headers.count })] : []),

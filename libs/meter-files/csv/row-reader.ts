@@ -5,6 +5,7 @@ import { StampedRows } from '../time/stamped-rows.js';
 import type { CsvLayout } from './csv-layout.js';
 import { DecimalMark, KEPT_COLUMNS } from './decimal-mark.js';
 import { type NumberCell, readNumberInto, readNumberText } from './number-cell.js';
+import type { QuickPlan } from './quick-rows.js';
 import type { RowCells } from './row-cells.js';
 import { RowStamps } from './row-stamps.js';
 
@@ -45,6 +46,13 @@ export class RowReader {
     this.#layout = layout;
     this.#standby = new Set(used.filter(({ quantity }) => quantity === 'standby').map(({ column }) => column));
     this.#lenient = layout.choices.length > 1;
+  }
+
+  /** What the quick lane may do for this file, or null where a state or a clock column of its own needs the general one. */
+  quickPlan(): QuickPlan | null {
+    const { time, names, delimiter } = this.#layout;
+    if (time.clock >= 0 || this.#standby.size > 0) return null;
+    return { delimiter, width: names.length, stamp: time.stamp, end: time.end, columns: this.columns };
   }
 
   /**

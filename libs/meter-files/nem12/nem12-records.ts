@@ -93,18 +93,21 @@ export function readDay(
     refuse({ code: 'bad-time', row, column: 2, expected: 'a date as YYYYMMDD', found: shown(cells.text(1)) });
     return null;
   }
-  if (cells.count < count + 3) {
-    const expected = `${count} values and a quality flag (at least ${count + 3} cells)`;
-    refuse({ code: 'wrong-length', row, expected, found: `${cells.count} cells` });
+  const texts = cells.texts();
+  // the first flag stands behind the last value
+  const flagAt = texts.findIndex((text, index) => index > 1 && /^[ASFENV]\d{0,2}$/i.test(text));
+  if (texts.length < count + 3 || (flagAt >= 0 && flagAt !== count + 2)) {
+    const found = `${(flagAt >= 0 ? flagAt : texts.length) - 2}`;
+    refuse({ code: 'wrong-length', row, expected: `${count} values and a quality flag`, found });
     return null;
   }
-  const quality = cells.text(2 + count).toUpperCase();
-  if (!/^(?:[ASFENV]\d{0,2})?$/.test(quality)) {
+  const quality = texts[2 + count]!.toUpperCase();
+  if (quality !== '' && flagAt < 0) {
     const expected = 'a quality flag behind the last value';
     refuse({ code: 'wrong-length', row, column: count + 3, expected, found: shown(quality) });
     return null;
   }
-  const values = readValues(cells, row, count, refuse);
+  const values = readValues(texts.slice(2, 2 + count), row, refuse);
   const parts: StreamDay = { day, values, row, substituted: 0, unstated: 0 };
   if (quality.startsWith('N')) values.fill(Number.NaN);
   if (/^[SFE]/.test(quality)) parts.substituted = count;
@@ -112,20 +115,17 @@ export function readDay(
   return { day: parts, quality };
 }
 
-function readValues(cells: RowCells, row: number, count: number, refuse: (problem: Problem) => void): Float64Array {
-  const values = new Float64Array(count);
+function readValues(texts: string[], row: number, refuse: (problem: Problem) => void): Float64Array {
   const cell: NumberCell = { form: 'missing', value: 0 };
-  for (let i = 0; i < count; i++) {
-    const text = cells.text(2 + i);
+  return Float64Array.from(texts, (text, i) => {
     readNumberText(text, cell);
     const place = { row, column: 3 + i, found: shown(text) };
-    if (cell.form === 'missing') values[i] = Number.NaN;
-    else if (!['plain', 'dot', 'openDot'].includes(cell.form))
+    if (cell.form === 'missing') return Number.NaN;
+    if (cell.form === 'wrong' || cell.form.endsWith('omma'))
       refuse({ code: 'bad-number', ...place, expected: 'a number' });
     else if (cell.value < 0) refuse({ code: 'out-of-range', ...place, expected: '0 or more' });
-    else values[i] = cell.value;
-  }
-  return values;
+    return cell.value;
+  });
 }
 
 /**

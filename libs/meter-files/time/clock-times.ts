@@ -61,8 +61,9 @@ export function orderRows(clock: Float64Array, rows: StampedRows, movable: boole
   const newestFirst = isNewestFirst(clock);
   const found = movable ? midnights(clock, rows, newestFirst) : null;
   const orderly = found !== null && found.descents <= 2 + clock.length / 100;
-  if (found === null || !orderly || found.ending === 0) return { newestFirst, movedMidnights: 0 };
-  if (found.beginning > 0) refuseMixedMidnights(rows, found.firstBeginning);
+  if (found === null || !orderly || found.ending.size === 0) return { newestFirst, movedMidnights: 0 };
+  const [contradiction] = found.beginning.values();
+  if (contradiction !== undefined) refuseMixedMidnights(rows, contradiction);
   let movedMidnights = 0;
   for (let i = 0; i < clock.length; i++) {
     if (rows.clockS[i] !== 0) continue;
@@ -79,26 +80,27 @@ function isNewestFirst(clock: Float64Array): boolean {
 }
 
 interface Midnights {
-  ending: number;
-  beginning: number;
-  firstBeginning: number;
+  /** midnights that end a day and stand nowhere as its beginning, each with a row it stands in [s] */
+  ending: Map<number, number>;
+  beginning: Map<number, number>;
   /** steps back in time that are no midnight */
   descents: number;
 }
 
 function midnights(clock: Float64Array, rows: StampedRows, newestFirst: boolean): Midnights {
   const n = clock.length;
-  const found: Midnights = { ending: 0, beginning: 0, firstBeginning: -1, descents: 0 };
+  const found: Midnights = { ending: new Map(), beginning: new Map(), descents: 0 };
   const row = (i: number) => (newestFirst ? n - 1 - i : i);
   for (let i = 0; i < n; i++) {
     const here = clock[row(i)]!;
     const before = i > 0 ? clock[row(i - 1)]! : Number.NaN;
     const after = i + 1 < n ? clock[row(i + 1)]! : Number.NaN;
     const kind = rows.clockS[row(i)] === 0 ? midnightKind(here, before, after) : 'none';
-    if (kind === 'ending') found.ending++;
-    else if (kind === 'beginning' && found.beginning++ === 0) found.firstBeginning = row(i);
-    else if (kind === 'none' && before > here) found.descents++;
+    if (kind !== 'none') found[kind].set(here, row(i));
+    else if (before > here) found.descents++;
   }
+  // a row repeated out of its place is no evidence
+  for (const midnight of found.beginning.keys()) found.ending.delete(midnight);
   return found;
 }
 
