@@ -25,6 +25,7 @@ export * from './network/flow.js';
 export * from './network/loads.js';
 export * from './network/network-check.js';
 export * from './network/network-model.js';
+export * from './network/nodal-impedance.js';
 export * from './network/peaks.js';
 export * from './network/scan-into.js';
 export * from './network/spectra.js';
