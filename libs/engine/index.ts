@@ -19,6 +19,7 @@ export * from './layout/levels.js';
 export * from './layout/stage.js';
 export * from './money/papers.js';
 export * from './network/bus-admittance.js';
+export * from './network/bus-columns.js';
 export * from './network/bus-flow.js';
 export * from './network/corners.js';
 export * from './network/flow.js';

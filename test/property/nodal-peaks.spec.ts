@@ -30,6 +30,15 @@ function compared(site: Site, corner: number): Compared[] {
   });
 }
 
+// A dense scan can step over a low one, so what is found is asked for itself.
+function isTop(site: Site, corner: number, { bus, orderH }: { bus: string; orderH: number }): boolean {
+  const ordersH = Float64Array.of(orderH - 2e-5, orderH, orderH + 2e-5);
+  const [before, top, after] = scanSite(site, { corner, ordersH }).levels.find(
+    (level) => level.bus === bus,
+  )!.impedanceOhm;
+  return top! > before! && top! > after!;
+}
+
 // At the very ends of the range a top is no interior one.
 const interior = (orders: number[]): number[] => orders.filter((h) => h > 1.01 && h < 49.99);
 
@@ -47,12 +56,7 @@ describe(`peaks at every bus of a network against a dense scan (seed ${SEED})`, 
             label,
           ).toBe(true);
         }
-        for (const orderH of interior(found)) {
-          expect(
-            expected.some((h) => Math.abs(h - orderH) < 2 * STEP_H),
-            label,
-          ).toBe(true);
-        }
+        for (const orderH of found) expect(isTop(site, corner, { bus, orderH }), `${orderH} ${label}`).toBe(true);
       }
     }
   });
