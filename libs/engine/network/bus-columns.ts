@@ -25,7 +25,10 @@ export interface BusColumns {
 export function busColumns(model: NetworkModel, network: number, bus: number, ordersH: Float64Array): BusColumns {
   const nodal = model.nodal?.cases[network];
   if (nodal === undefined) return { bank: tableAt(model, network, ordersH).bus, other: null };
-  return nodeColumns(nodalTable(nodal, ordersH), nodal.busNode[bus]!, nodal.busNode[model.bankBus]!);
+  const table = nodalTable(nodal, ordersH);
+  const bankNode = nodal.busNode[model.bankBus]!;
+  const bank = reciprocal(tableColumn(table, bankNode, bankNode));
+  return { bank, other: otherColumns(table, nodal.busNode[bus]!, bankNode) };
 }
 
 /**
@@ -41,25 +44,37 @@ export function networkColumns(model: NetworkModel, network: number, ordersH: Fl
   if (nodal === undefined) return [busColumns(model, network, 0, ordersH)];
   const table = nodalTable(nodal, ordersH);
   const bankNode = nodal.busNode[model.bankBus]!;
-  const perNode = [...new Set(nodal.busNode)].sort((a, b) => a - b).map((node) => nodeColumns(table, node, bankNode));
+  const bank = reciprocal(tableColumn(table, bankNode, bankNode));
+  const perNode = [...new Set(nodal.busNode)]
+    .sort((a, b) => a - b)
+    .map((node) => ({ bank, other: otherColumns(table, node, bankNode) }));
   return Array.from(nodal.busNode, (node) => perNode[node]!);
 }
 
-function nodeColumns(table: NodalTable, node: number, bankNode: number): BusColumns {
-  const bank = reciprocal(tableColumn(table, bankNode, bankNode));
-  if (node === bankNode) return { bank, other: null };
-  return { bank, other: { self: tableColumn(table, node, node), toBank: tableColumn(table, node, bankNode) } };
+function otherColumns(table: NodalTable, node: number, bankNode: number): BusColumns['other'] {
+  if (node === bankNode) return null;
+  return { self: tableColumn(table, node, node), toBank: tableColumn(table, node, bankNode) };
 }
 
 function tableColumn(table: NodalTable, row: number, column: number): ComplexColumn {
   const n = table.nodes;
-  const at = (i: number): number => 2 * (i * n * n + row * n + column);
-  return { re: table.ordersH.map((_, i) => table.z[at(i)]!), im: table.ordersH.map((_, i) => table.z[at(i) + 1]!) };
+  const length = table.ordersH.length;
+  const out: ComplexColumn = { re: new Float64Array(length), im: new Float64Array(length) };
+  for (let i = 0, at = 2 * (row * n + column); i < length; i++, at += 2 * n * n) {
+    out.re[i] = table.z[at]!;
+    out.im[i] = table.z[at + 1]!;
+  }
+  return out;
 }
 
 function reciprocal({ re, im }: ComplexColumn): ComplexColumn {
-  const square = re.map((r, i) => r * r + im[i]! * im[i]!);
-  return { re: re.map((r, i) => r / square[i]!), im: im.map((x, i) => -x / square[i]!) };
+  const out: ComplexColumn = { re: new Float64Array(re.length), im: new Float64Array(re.length) };
+  for (let i = 0; i < re.length; i++) {
+    const square = re[i]! * re[i]! + im[i]! * im[i]!;
+    out.re[i] = re[i]! / square;
+    out.im[i] = -im[i]! / square;
+  }
+  return out;
 }
 
 /**
