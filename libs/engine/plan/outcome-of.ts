@@ -9,7 +9,7 @@ import type { Remark } from '../problem.js';
 import { cautions } from './cautions.js';
 import { figures } from './figures.js';
 import type { Outcome, Rival } from './outcome.js';
-import { reasons } from './reasons.js';
+import { overwhelmingKva, reasons } from './reasons.js';
 import type { Result } from './result.js';
 import { type Operated, operate, type Study } from './study.js';
 
@@ -110,14 +110,18 @@ export function judge(study: Study, bank: Bank, control: Control): Judgement {
 }
 
 /**
- * The verdict with what the record itself leaves open: an unknown old bank is at best `watch`.
+ * The verdict with what the record itself leaves open: an unknown old bank, or more load than the supply could carry, is
+ * at best `watch`.
  * @param study site and record
  * @param judgement the bank judged
  * @returns overall verdict
  * @source method-controller
  */
 export function overallVerdict(study: Study, judgement: Judgement): Verdict {
-  return study.site.recordedBank.state === 'unknown' ? graver(judgement.verdict, 'watch') : judgement.verdict;
+  const open =
+    study.site.recordedBank.state === 'unknown' ||
+    overwhelmingKva(study, judgement.network.shortCircuitMinMva) !== null;
+  return open ? graver(judgement.verdict, 'watch') : judgement.verdict;
 }
 
 function series(study: Study, operated: Operated): Outcome['series'] {

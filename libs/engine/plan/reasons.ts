@@ -26,6 +26,7 @@ export function reasons(study: Study, bank: Bank, operated: Operated, judgement:
   return [
     ...duties('avoid').map((duty) => dutyReason('limit.exceeded', duty)),
     ...duties('watch').map((duty) => dutyReason(watchCode(duty), duty)),
+    ...supplyReasons(study, judgement),
     ...networkReasons(study, bank, judgement),
     ...recordReasons(study),
     ...operationReasons(study, bank, operated),
@@ -46,6 +47,25 @@ function dutyReason(code: string, duty: Duty): Remark {
   if (duty.orderH !== null) values.orderH = duty.orderH;
   if (duty.corner !== null) Object.assign(values, duty.corner);
   return remark(code, values, { unit: duty.unit, source: duty.source });
+}
+
+/**
+ * Does the load ask for more than a short circuit at the bank's bus would give: then nothing computed from the fault
+ * level means much.
+ * @param study site and record
+ * @param shortCircuitMinMva least fault level at the bank's bus [MVA]
+ * @returns the greatest load [kVA], or null where the supply is stronger
+ * @source method-limits
+ */
+export function overwhelmingKva(study: Study, shortCircuitMinMva: number): number | null {
+  const loadKva = (Math.sqrt(3) * study.site.nominalV * study.model.loadA) / 1000;
+  return loadKva > shortCircuitMinMva * 1000 ? loadKva : null;
+}
+
+function supplyReasons(study: Study, { network: { shortCircuitMinMva } }: Judgement): Remark[] {
+  const loadKva = overwhelmingKva(study, shortCircuitMinMva);
+  if (loadKva === null) return [];
+  return [remark('supply.weakerThanLoad', { shortCircuitMinMva, loadKva }, { path: 'supply.faultLevelMva' })];
 }
 
 function networkReasons(study: Study, bank: Bank, judgement: Judgement): Remark[] {
