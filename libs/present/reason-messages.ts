@@ -51,6 +51,13 @@ export const REASON_MESSAGES: Messages = {
     text: 'The distortion of the supply is unknown, so the network is not judged.',
     consequence: 'Ask the network operator for it, or declare with an empty list that there is none.',
   },
+  'supply.weakerThanLoad': {
+    level: 'blocks issue',
+    text:
+      'The record’s greatest load, {loadKva}, is more than the least fault level at the bank, {shortCircuitMinMva}: such a ' +
+      'supply could not carry it, so what is computed from the fault level means little.',
+    consequence: 'Ask the network operator for the fault level again, and look at the unit it was given in.',
+  },
   'recordedBank.unknown': {
     level: 'to be accepted',
     text: 'Whether a bank was working while the record was taken is unknown, so the load’s own kvar are not known.',

@@ -75,19 +75,32 @@ export function recordReport(summary: RecordSummary, zone: ZoneTable = UTC_TABLE
 export function scanReport(levels: readonly ScannedLevel[]): string {
   const first = levels[0];
   if (first === undefined) return '';
-  const head = ['fault level', 'capacitance', 'inductance', 'damping', 'peak at order', 'peak'];
-  const rows = levels.map(({ corner, parallelOrderH, peakOhm }) => [
+  const severalBuses = levels.some(({ bus }) => bus !== first.bus);
+  const severalStandings = levels.some(({ corner }) => corner.standing !== undefined);
+  const head = [
+    ...(severalBuses ? ['bus'] : []),
+    'fault level',
+    'capacitance',
+    'inductance',
+    'damping',
+    'peak at order',
+    'peak',
+    ...(severalStandings ? ['standing'] : []),
+  ];
+  const rows = levels.map(({ bus, corner, parallelOrderH, peakOhm }) => [
+    ...(severalBuses ? [plainName(bus)] : []),
     formatQuantity(corner.faultLevelMva, 'MVA', 'given'),
     `× ${formatNumber(corner.capacitanceFactor, 'given')}`,
     `× ${formatNumber(corner.inductanceFactor, 'given')}`,
     formatQuantity(corner.dampingKw, 'kW'),
     formatQuantity(parallelOrderH, ''),
     formatQuantity(peakOhm, 'Ω'),
+    ...(severalStandings ? [plainName(corner.standing ?? 'normal')] : []),
   ]);
   const widths = head.map((text, at) => Math.max(text.length, ...rows.map((cells) => cells[at]!.length)));
   const line = (cells: readonly string[]) => cells.map((cell, at) => cell.padStart(widths[at]!)).join('  ');
   return finished([
-    `Impedance at the bus with ${formatQuantity(first.levelKvar, 'kvar')} connected; the first row is the nominal case.`,
+    `Impedance at ${severalBuses ? 'each bus' : 'the bus'} with ${formatQuantity(first.levelKvar, 'kvar')} connected; the first row is the nominal case.`,
     line(head),
     ...rows.map(line),
   ]);

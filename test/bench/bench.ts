@@ -1,4 +1,5 @@
 // How fast the program is on this machine: its two hot loops against the same work in C, and one whole plan.
+import { busesWorks } from './bench-buses.js';
 import { scanWork } from './bench-scan.js';
 import { simulationWorks } from './bench-simulate.js';
 import { benchPlan } from './bench-plan.js';
@@ -8,7 +9,7 @@ import { crowding } from './stopwatch.js';
 const MOST_CROWDING = 1.15;
 
 const before = await crowding();
-const met = [...simulationWorks(), scanWork()].map((work) => compareTwins(work)?.met ?? true);
+const met = [...simulationWorks(), scanWork(), ...busesWorks()].map((work) => compareTwins(work)?.met ?? true);
 met.push(benchPlan());
 const crowded = Math.max(before, await crowding());
 const counts = crowded <= MOST_CROWDING;

@@ -1,6 +1,7 @@
+import { netlistComment } from '../network/network-netlist.js';
 import { type ComplexNumber, cAdd, cDivide, cMultiply } from '../quantity/complex-number.js';
-import { type ClosingCircuit, closingPeak } from './closing-circuit.js';
-import type { SeriesBranch } from './series-branch.js';
+import { closingPeak } from './closing-circuit.js';
+import type { ClosingCircuit, SeriesBranch } from './loop-impedance.js';
 
 /**
  * The circuit of a closing as a plain SPICE netlist, for a second opinion: resistances at their fundamental value, the
@@ -22,7 +23,7 @@ export function closingNetlist(circuit: ClosingCircuit, title: string): string {
   const busV = cDivide(source, cMultiply(sourceZ, total));
   const sourceA = z.reduce((sum, each) => cAdd(sum, cDivide(busV, each)), { re: 0, im: 0 });
   const lines = [
-    `* ${title.replaceAll(/[\r\n]+/g, ' ')}`,
+    netlistComment(title),
     `* greatest current expected: ${number(peakA)} A, ${number(afterS)} s after closing`,
     `vsource feed 0 sin(0 ${number(circuit.crestV)} ${number(circuit.frequencyHz)} 0 0 ${number((phaseRad * 180) / Math.PI + 90)})`,
     ...(circuit.sourceOhm > 0 ? [`rsource feed inner ${number(circuit.sourceOhm)}`] : []),

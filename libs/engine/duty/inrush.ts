@@ -2,8 +2,8 @@ import type { Bank } from '../layout/bank.js';
 import { ratedA, stageOhm } from '../layout/stage.js';
 import type { SeriesOhm } from '../supply/supply-path.js';
 import { closingPeak } from './closing-circuit.js';
+import type { ClosingCircuit, SeriesBranch } from './loop-impedance.js';
 import { CAPACITOR_RULES, type RuleSet } from './rules.js';
-import type { SeriesBranch } from './series-branch.js';
 
 /** Peak current of closing one stage of a group, closed forms. */
 export interface InrushStage {
@@ -113,16 +113,23 @@ export interface ExactInrush {
   worstPeakA: number;
 }
 
+/** One closing of a stage: alone, or onto what a count vector has connected. */
+export interface Closing {
+  circuit: ClosingCircuit;
+  /** connected stages per group before the closing */
+  vector: Int32Array;
+}
+
 /**
- * Exact peak of closing one stage of a group at the worst instant: alone, and onto every level. The inductance between
+ * Every closing of one stage of a group: alone first, then onto every level at which one is left. The inductance between
  * stages counts once, before the closing stage, as in the closed form; damping loads and harmonics are left out.
  * @param bank the bank
  * @param index the closing stage's group
  * @param site voltage, frequency, supply, count vectors
- * @returns peaks [A]
+ * @returns circuits per phase
  * @source method-inrush
  */
-export function exactInrush(bank: Bank, index: number, site: ClosingSite): ExactInrush {
+export function closings(bank: Bank, index: number, site: ClosingSite): Closing[] {
   const omega = 2 * Math.PI * site.frequencyHz;
   const branches = bank.groups.map((group) => {
     const ohm = stageOhm(group);
@@ -131,21 +138,32 @@ export function exactInrush(bank: Bank, index: number, site: ClosingSite): Exact
   });
   const own = branches[index]!;
   const ontoOwn = { ...own, inductanceH: own.inductanceH + bank.interStageUh * 1e-6 };
-  const circuit = {
+  const supply = {
     sourceOhm: site.supplyOhm.rOhm,
     sourceH: site.supplyOhm.xOhm / omega,
     crestV: (Math.SQRT2 * site.nominalV) / Math.sqrt(3),
     frequencyHz: site.frequencyHz,
   };
-  const singlePeakA = closingPeak({ ...circuit, connected: [], closing: own }).peakA;
-  let worstPeakA = singlePeakA;
-  for (const vector of site.vectors) {
-    if (vector[index]! >= bank.groups[index]!.count) continue;
+  const onto = site.vectors.flatMap((vector): Closing[] => {
+    if (vector[index]! >= bank.groups[index]!.count) return [];
     const connected = branches.flatMap((branch, g) => (vector[g]! > 0 ? [scaledBranch(branch, vector[g]!)] : []));
-    if (connected.length === 0) continue;
-    worstPeakA = Math.max(worstPeakA, closingPeak({ ...circuit, connected, closing: ontoOwn }).peakA);
-  }
-  return { singlePeakA, worstPeakA };
+    return connected.length === 0 ? [] : [{ circuit: { ...supply, connected, closing: ontoOwn }, vector }];
+  });
+  const alone = { circuit: { ...supply, connected: [], closing: own }, vector: new Int32Array(bank.groups.length) };
+  return [alone, ...onto];
+}
+
+/**
+ * Exact peak of closing one stage of a group at the worst instant: alone, and onto every level.
+ * @param bank the bank
+ * @param index the closing stage's group
+ * @param site voltage, frequency, supply, count vectors
+ * @returns peaks [A]
+ * @source method-inrush
+ */
+export function exactInrush(bank: Bank, index: number, site: ClosingSite): ExactInrush {
+  const peaksA = closings(bank, index, site).map(({ circuit }) => closingPeak(circuit).peakA);
+  return { singlePeakA: peaksA[0]!, worstPeakA: peaksA.reduce((worst, peakA) => Math.max(worst, peakA)) };
 }
 
 // Equal branches in parallel are one branch of their sum.

@@ -198,8 +198,13 @@ function inrushRow(
   return [duty.verdict === 'avoid' && assumed ? { ...duty, verdict: 'watch' } : duty];
 }
 
-// Supply at its strongest, seen from the bank's bus at the fundamental, loads and capacitors left out.
-function fundamentalOhm(model: NetworkModel): { rOhm: number; xOhm: number } {
+/**
+ * Supply at its strongest, seen from the bank's bus at the fundamental, loads and capacitors left out.
+ * @param model the network without the bank
+ * @returns R and X per phase [Ω]
+ * @source method-inrush
+ */
+export function fundamentalOhm(model: NetworkModel): { rOhm: number; xOhm: number } {
   const z = new Float64Array(2);
   if (model.nodal === null) pathImpedanceInto(model.corners.networks[1]!.path, 1, z);
   else strongestInto(model, z);

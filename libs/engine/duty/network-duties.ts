@@ -1,4 +1,4 @@
-import type { Flow } from '../network/flow-at.js';
+import type { Flow } from '../network/bus-flow.js';
 import type { NetworkModel } from '../network/network-model.js';
 import { type CurrentLimits, currentLimits } from './current-limits.js';
 import { type Duty, DutyRow, NEAR_RATIO, type Place, ratioVerdict } from './duty-row.js';

@@ -1,7 +1,6 @@
-import type { ComplexColumn } from './bus-admittance.js';
+import { type ComplexColumn, LEAST_SIEMENS } from './bus-admittance.js';
 import { type NetworkModel, tableAt } from './network-model.js';
-import { nodalTable } from './nodal-impedance.js';
-import { LEAST_SIEMENS } from './scan-into.js';
+import { type NodalTable, nodalTable } from './nodal-impedance.js';
 
 /**
  * What a bus and the bank's bus know of each other with the bank out, over orders. Connecting the bank is a rank-1
@@ -25,23 +24,57 @@ export interface BusColumns {
  */
 export function busColumns(model: NetworkModel, network: number, bus: number, ordersH: Float64Array): BusColumns {
   const nodal = model.nodal?.cases[network];
-  if (nodal === undefined || nodal.busNode[bus] === nodal.busNode[model.bankBus]) {
-    return { bank: tableAt(model, network, ordersH).bus, other: null };
-  }
+  if (nodal === undefined) return { bank: tableAt(model, network, ordersH).bus, other: null };
   const table = nodalTable(nodal, ordersH);
-  const n = table.nodes;
-  const node = nodal.busNode[bus]!;
   const bankNode = nodal.busNode[model.bankBus]!;
-  const column = (row: number, of: number): ComplexColumn => {
-    const at = (i: number): number => 2 * (i * n * n + row * n + of);
-    return { re: ordersH.map((_, i) => table.z[at(i)]!), im: ordersH.map((_, i) => table.z[at(i) + 1]!) };
-  };
-  const bankZ = column(bankNode, bankNode);
-  const square = bankZ.re.map((re, i) => re * re + bankZ.im[i]! ** 2);
-  return {
-    bank: { re: bankZ.re.map((re, i) => re / square[i]!), im: bankZ.im.map((im, i) => -im / square[i]!) },
-    other: { self: column(node, node), toBank: column(node, bankNode) },
-  };
+  const bank = reciprocal(tableColumn(table, bankNode, bankNode));
+  return { bank, other: otherColumns(table, nodal.busNode[bus]!, bankNode) };
+}
+
+/**
+ * Columns of every bus in one network, from one factorisation an order.
+ * @param model the network without the bank
+ * @param network index into the corners' networks
+ * @param ordersH orders h ≥ 1, length n
+ * @returns columns of length n, in the order of the buses; buses that are one node share theirs
+ * @source method-network
+ */
+export function networkColumns(model: NetworkModel, network: number, ordersH: Float64Array): BusColumns[] {
+  const nodal = model.nodal?.cases[network];
+  if (nodal === undefined) return [busColumns(model, network, 0, ordersH)];
+  const table = nodalTable(nodal, ordersH);
+  const bankNode = nodal.busNode[model.bankBus]!;
+  const bank = reciprocal(tableColumn(table, bankNode, bankNode));
+  const perNode = [...new Set(nodal.busNode)]
+    .sort((a, b) => a - b)
+    .map((node) => ({ bank, other: otherColumns(table, node, bankNode) }));
+  return Array.from(nodal.busNode, (node) => perNode[node]!);
+}
+
+function otherColumns(table: NodalTable, node: number, bankNode: number): BusColumns['other'] {
+  if (node === bankNode) return null;
+  return { self: tableColumn(table, node, node), toBank: tableColumn(table, node, bankNode) };
+}
+
+function tableColumn(table: NodalTable, row: number, column: number): ComplexColumn {
+  const n = table.nodes;
+  const length = table.ordersH.length;
+  const out: ComplexColumn = { re: new Float64Array(length), im: new Float64Array(length) };
+  for (let i = 0, at = 2 * (row * n + column); i < length; i++, at += 2 * n * n) {
+    out.re[i] = table.z[at]!;
+    out.im[i] = table.z[at + 1]!;
+  }
+  return out;
+}
+
+function reciprocal({ re, im }: ComplexColumn): ComplexColumn {
+  const out: ComplexColumn = { re: new Float64Array(re.length), im: new Float64Array(re.length) };
+  for (let i = 0; i < re.length; i++) {
+    const square = re[i]! * re[i]! + im[i]! * im[i]!;
+    out.re[i] = re[i]! / square;
+    out.im[i] = -im[i]! / square;
+  }
+  return out;
 }
 
 /**

@@ -1,10 +1,9 @@
 import type { Bank } from '../layout/bank.js';
 import type { Level } from '../layout/levels.js';
-import type { ComplexColumn } from './bus-admittance.js';
-import type { Flow } from './flow-at.js';
+import { type ComplexColumn, LEAST_SIEMENS } from './bus-admittance.js';
+import type { Flow } from './bus-flow.js';
 import type { NetworkModel } from './network-model.js';
 import { nodalFlowInto } from './nodal-flow.js';
-import { LEAST_SIEMENS } from './scan-into.js';
 import { stageAdmittance, stageBranch } from './stage-admittance.js';
 import { combine } from './summation.js';
 

@@ -1,7 +1,7 @@
 import { type SupplyPath, shortCircuitMva } from '../supply/supply-path.js';
+import type { Flow } from './bus-flow.js';
 import type { Corner } from './corners.js';
 import type { BankModel } from './flow.js';
-import type { Flow } from './flow-at.js';
 import type { NetworkModel } from './network-model.js';
 import { networkStates } from './network-states.js';
 import { nodalCase } from './nodal-case.js';

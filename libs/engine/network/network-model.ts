@@ -78,7 +78,7 @@ export function siteNetwork(
   const { nominalV, loadA, topology } = site;
   const damping = { nominalV, motorSharePct: loads.motorSharePct };
   const states = topology === null ? [null] : networkStates(topology);
-  const corners = cornerSet(supply, loads, nominalV, states);
+  const corners = cornerSet(supply, topology === null ? loads : withListed(loads, topology), nominalV, states);
   const present = excitation(loads, nominalV);
   const nodal = topology === null ? null : nodalModel({ topology, corners, loads, damping, present });
   const model: NetworkModel = {
@@ -133,12 +133,11 @@ function nodalModel(parts: {
   present: Excitation;
 }): NodalModel {
   const { topology, corners, loads, damping, present } = parts;
-  const mostKw = loads.dampingKw.max;
+  const mostKw = withListed(loads, topology).dampingKw.max;
   const cases = corners.networks.map(({ path, dampingKw, state }) => {
-    // Listed motors and loads are in as far as the corner's damping is; without a damping load of its own a site's
-    // nominal corner has them all and its undamped corner none.
-    const listedShare = mostKw > 0 ? dampingKw / mostKw : 1;
-    return nodalCase(topology, state!, path, { ...damping, dampingKw, listedShare });
+    const listedShare = mostKw > 0 ? dampingKw / mostKw : 0;
+    const atBankKw = listedShare * loads.dampingKw.max;
+    return nodalCase(topology, state!, path, { ...damping, dampingKw: atBankKw, listedShare });
   });
   return {
     topology,
@@ -146,6 +145,12 @@ function nodalModel(parts: {
     tables: cases.map((nodal) => nodalTable(nodal, present.ordersH)),
     injectedA: topology.buses.map((name, bus) => busInjection(loads, present, { name, first: bus === 0 })),
   };
+}
+
+// A corner's damping is the whole site's, so the undamped one has neither the damping load nor what is listed.
+function withListed(loads: Loads, { motorKw, resistiveKw }: Topology): Loads {
+  const listedKw = [...motorKw, ...resistiveKw].reduce((sum, kw) => sum + kw, 0);
+  return { ...loads, dampingKw: { min: loads.dampingKw.min, max: loads.dampingKw.max + listedKw } };
 }
 
 function busInjection(loads: Loads, present: Excitation, bus: { name: string; first: boolean }): Float64Array {

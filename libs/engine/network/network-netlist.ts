@@ -33,14 +33,25 @@ export function networkNetlist(model: NetworkModel, scene: NetlistScene): string
   const lowest = Math.min(...orders) * scene.frequencyHz;
   const highest = Math.max(...orders) * scene.frequencyHz;
   return [
-    `* ${scene.title.replaceAll(/[\r\n]+/g, ' ')}`,
-    '* One copy of the network an order; read each at the frequency in its comment: a sweep to another makes no sense,',
-    '* since its resistances belong to its own order. 1 A enters at the bank bus, so volts are ohms.',
+    netlistComment(scene.title),
+    ...model.buses.map((name, k) => netlistComment(`${name}: ${nodeName(model, nodal, nodal.busNode[k]!)}`)),
+    '* Above, each bus and its node; a node ends in its order. One copy of the network an order; read each at the',
+    '* frequency in its comment: a sweep to another makes no sense, since its resistances belong to its own order.',
+    '* 1 A enters at the bus of the bank, so volts are ohms.',
     ...copies.flat(),
     ...orders.slice(0, 1).map(() => `.ac lin ${sweepPoints(orders)} ${number(lowest)} ${number(highest)}`),
     '.end',
     '',
   ].join('\n');
+}
+
+/**
+ * Text of a person's as a comment: nothing in it can end the line or begin a statement.
+ * @param text any text
+ * @returns one line
+ */
+export function netlistComment(text: string): string {
+  return `* ${text.replaceAll(/[\p{C}\p{Zl}\p{Zp}]+/gu, ' ').trim()}`;
 }
 
 // Evenly spaced orders can be swept in one go; others are read one frequency at a time.
@@ -102,6 +113,10 @@ function stageParts(stage: StageBranch, growth: number): { rOhm: number; xOhm: n
   return { rOhm: stage.resistanceOhm * growth, xOhm: stage.inductiveOhm, capacitiveOhm: stage.capacitiveOhm };
 }
 
+// A simulator begins with direct current, for which coils side by side without any resistance have no answer: such a
+// coil gets a resistance too small to be seen in the figures.
+const LEAST_RESISTANCE_SHARE = 1e-8;
+
 // A branch as the parts it has, in series between its ends.
 function seriesLines(
   name: string,
@@ -109,7 +124,8 @@ function seriesLines(
   { rOhm, xOhm, capacitiveOhm, omega }: { rOhm: number; xOhm: number; capacitiveOhm: number; omega: number },
 ): string[] {
   const parts: [string, number][] = [];
-  if (rOhm > 0) parts.push(['r', rOhm]);
+  const leastOhm = capacitiveOhm > 0 ? 0 : LEAST_RESISTANCE_SHARE * xOhm;
+  if (rOhm > 0 || leastOhm > 0) parts.push(['r', Math.max(rOhm, leastOhm)]);
   if (xOhm > 0) parts.push(['l', xOhm / omega]);
   if (capacitiveOhm > 0) parts.push(['c', 1 / (omega * capacitiveOhm)]);
   return parts.map(([kind, value], i) => {

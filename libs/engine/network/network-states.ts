@@ -21,9 +21,11 @@ export function networkStates(topology: Topology): NetworkState[] {
   let states = [normal];
   for (const [i, { name, state }] of topology.couplers.entries()) {
     if (state === 'either') states = states.flatMap((s) => [s, named(s, `${name} closed`, { coupler: i })]);
+    refuseTooMany(states.length);
   }
   for (const [i, { name, state }] of topology.generators.entries()) {
     if (state === 'either') states = states.flatMap((s) => [s, named(s, `${name} running`, { generator: i })]);
+    refuseTooMany(states.length);
   }
   for (const [i, { name, group, switched }] of topology.capacitors.entries()) {
     if (!switched) continue;

@@ -1,5 +1,5 @@
 import type { ComplexColumn } from './bus-admittance.js';
-import type { Flow } from './flow-at.js';
+import type { Flow } from './bus-flow.js';
 import type { NetworkModel, NodalModel } from './network-model.js';
 import { combine } from './summation.js';
 
@@ -59,6 +59,9 @@ class OrderAt {
   readonly #injectedA: Float64Array;
   #bankRe = 0;
   #bankIm = 0;
+  /** 1 + Y·z_bb */
+  #loopRe = 1;
+  #loopIm = 0;
   /** Y/(1 + Y·z_bb) [S] */
   #factorRe = 0;
   #factorIm = 0;
@@ -93,6 +96,8 @@ class OrderAt {
     const at = this.#at(this.#bankNode, this.#bankNode);
     const re = 1 + this.#bankRe * this.#z[at]! - this.#bankIm * this.#z[at + 1]!;
     const im = this.#bankRe * this.#z[at + 1]! + this.#bankIm * this.#z[at]!;
+    this.#loopRe = re;
+    this.#loopIm = im;
     const square = re * re + im * im;
     this.#factorRe = (this.#bankRe * re + this.#bankIm * im) / square;
     this.#factorIm = (this.#bankIm * re - this.#bankRe * im) / square;
@@ -137,6 +142,7 @@ class OrderAt {
 
   #transfer(row: number, column: number): [number, number] {
     const at = this.#at(row, column);
+    if (row === this.#bankNode || column === this.#bankNode) return this.#divided(at);
     const toBank = this.#at(row, this.#bankNode);
     const fromBank = this.#at(this.#bankNode, column);
     const z = this.#z;
@@ -146,6 +152,14 @@ class OrderAt {
       z[at]! - (pRe * this.#factorRe - pIm * this.#factorIm),
       z[at + 1]! - (pRe * this.#factorIm + pIm * this.#factorRe),
     ];
+  }
+
+  // Z_pb = z_pb/(1 + Y·z_bb): beside the bank's tuned order the difference would be all rounding.
+  #divided(at: number): [number, number] {
+    const square = this.#loopRe * this.#loopRe + this.#loopIm * this.#loopIm;
+    const re = this.#z[at]!;
+    const im = this.#z[at + 1]!;
+    return [(re * this.#loopRe + im * this.#loopIm) / square, (im * this.#loopRe - re * this.#loopIm) / square];
   }
 }
 

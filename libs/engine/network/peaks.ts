@@ -1,7 +1,7 @@
 import type { Bank } from '../layout/bank.js';
 import { goldenMinimum } from '../quantity/minimum.js';
 import type { ComplexColumn } from './bus-admittance.js';
-import { type BusColumns, bankColumn, busColumns, seenSquareInto } from './bus-columns.js';
+import { type BusColumns, bankColumn, busColumns, networkColumns, seenSquareInto } from './bus-columns.js';
 import type { CornerCase } from './corners.js';
 import type { NetworkModel } from './network-model.js';
 import { HIGHEST_ORDER_H } from './spectra.js';
@@ -25,6 +25,10 @@ const REFINED_WIDTH_H = 1e-6;
 const APPROACH = 0.7;
 const APPROACH_FROM = 0.05;
 const APPROACH_POINTS = 30;
+/** Looks at a shoulder, three steps of the grid. */
+const SHOULDER_POINTS = 60;
+/** Neighbouring shoulders overlap. */
+const SAME_PEAK_H = 1e-4;
 /** Points nearer than this are one: groups of one ratio but other ratings differ in the last digit of their tuned order,
  * and two samples a rounding apart would make a false valley of the rounding. */
 const ONE_POINT_H = 1e-9;
@@ -36,7 +40,7 @@ const ONE_POINT_H = 1e-9;
  * are inductive and resistive it turns only beside a branch's tuned order (between two tuned orders of the lossless
  * circuit there is exactly one pole), so the even grid is joined by points that close in geometrically on every tuned
  * order, in every corner, from both sides: each rising and each falling piece then holds a sample. Capacitors of the
- * network itself add tuned orders of their own.
+ * network itself add tuned orders of their own, and where the slope all but vanishes the grid is refined.
  */
 export class PeakFinder {
   readonly #model: NetworkModel;
@@ -45,7 +49,7 @@ export class PeakFinder {
   /** reused from call to call */
   readonly #square: Float64Array;
   readonly #stages: (ComplexColumn[] | undefined)[] = [];
-  readonly #buses: (BusColumns | undefined)[][] = [];
+  readonly #buses: (BusColumns[] | undefined)[] = [];
 
   /**
    * @param model the network without the bank
@@ -93,7 +97,9 @@ export class PeakFinder {
         peaks.push({ orderH, impedanceOhm: 1 / Math.sqrt(exact(orderH)) });
       }
     }
-    return peaks;
+    return this.#model.nodal === null
+      ? peaks
+      : this.#withShoulders(peaks, square, (h) => this.#squareAt(h, vector, { corner, bus }));
   }
 
   /**
@@ -110,6 +116,20 @@ export class PeakFinder {
       if (greatest === null || peak.impedanceOhm > greatest.impedanceOhm) greatest = peak;
     }
     return greatest;
+  }
+
+  // Cables and capacitors of the network can make |Z| turn twice within a step on a steep side: there its slope all but
+  // vanishes against what it changes by from step to step, and the place is looked at more closely.
+  #withShoulders(peaks: Peak[], square: Float64Array, exact: (h: number) => number): Peak[] {
+    const found = [...peaks];
+    for (let i = 1; i < square.length - 2; i++) {
+      if (!isShoulder(this.#ordersH, square, i)) continue;
+      for (const orderH of hiddenMinima(exact, this.#ordersH[i - 1]!, this.#ordersH[i + 2]!)) {
+        if (found.some((peak) => Math.abs(peak.orderH - orderH) < SAME_PEAK_H)) continue;
+        found.push({ orderH, impedanceOhm: 1 / Math.sqrt(exact(orderH)) });
+      }
+    }
+    return found.sort((a, b) => a.orderH - b.orderH);
   }
 
   #branches(factors: number): StageBranch[] {
@@ -132,10 +152,8 @@ export class PeakFinder {
   }
 
   #columns(network: number, bus: number): BusColumns {
-    this.#buses[network] ??= [];
-    const known = this.#buses[network];
-    known[bus] ??= busColumns(this.#model, network, bus, this.#ordersH);
-    return known[bus];
+    this.#buses[network] ??= networkColumns(this.#model, network, this.#ordersH);
+    return this.#buses[network][bus]!;
   }
 
   #squareAt(orderH: number, vector: Int32Array, at: { corner: CornerCase; bus: number }): number {
@@ -145,6 +163,25 @@ export class PeakFinder {
     seenSquareInto(busColumns(this.#model, at.corner.network, at.bus, ordersH), bankColumn(stages, vector, 1), out);
     return out[0]!;
   }
+}
+
+function isShoulder(ordersH: Float64Array, square: Float64Array, i: number): boolean {
+  const slope = (k: number): number => (square[k + 1]! - square[k]!) / (ordersH[k + 1]! - ordersH[k]!);
+  const [before, here, after] = [slope(i - 1), slope(i), slope(i + 1)];
+  if (before * here <= 0 || here * after <= 0) return false;
+  if (Math.abs(here) > Math.abs(before) || Math.abs(here) >= Math.abs(after)) return false;
+  return Math.abs(here) < Math.max(Math.abs(before - here), Math.abs(after - here));
+}
+
+function hiddenMinima(exact: (h: number) => number, lowH: number, highH: number): number[] {
+  const orderH = (k: number): number => lowH + (k * (highH - lowH)) / SHOULDER_POINTS;
+  const values = Array.from({ length: SHOULDER_POINTS + 1 }, (_, k) => exact(orderH(k)));
+  const minima: number[] = [];
+  for (let k = 1; k < SHOULDER_POINTS; k++) {
+    if (!(values[k]! < values[k - 1]! && values[k]! <= values[k + 1]!)) continue;
+    minima.push(goldenMinimum(exact, orderH(k - 1), orderH(k + 1), REFINED_WIDTH_H));
+  }
+  return minima;
 }
 
 // Capacitors that stand in the network: tuned orders of their own branches.

@@ -25,6 +25,7 @@ const GENERATOR_R_OVER_X = 0.15;
  */
 export function settleTopology(input: NetworkInput, basis: TopologyBasis): Topology {
   const names = new Names(input.buses.map(({ name }) => name));
+  if (input.buses.length === 0) throw new InputProblem(names.problems);
   const topology: Topology = {
     buses: input.buses.map(({ name }) => name),
     couplers: (input.couplers ?? []).map((coupler, i) => ({

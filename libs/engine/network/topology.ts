@@ -78,7 +78,7 @@ export interface Cable {
   xOhm: number;
 }
 
-/** A generator; counts only while it runs [Ω at the fundamental]. */
+/** A generator behind its subtransient impedance [Ω at the fundamental]. */
 export interface Generator {
   name: string;
   bus: number;
@@ -122,8 +122,8 @@ export const MOST_STATES = 256;
 
 /**
  * The topology of a site with one bus.
- * @param transformers how many there are, in parallel
- * @returns one bus, nothing on it
+ * @param transformers how many feed it; 0 where the source stands at it
+ * @returns a single bus with the bank
  */
 export function oneBus(transformers: number): Topology {
   return {

@@ -2,6 +2,7 @@ import { type JudgeBasis, type Judgement, judgeBank } from '../duty/judge-bank.j
 import { graver, type Verdict } from '../duty/rules.js';
 import type { Bank } from '../layout/bank.js';
 import { bankLevels } from '../layout/levels.js';
+import { summarizeNetwork } from '../network/network-check.js';
 import type { NetworkModel } from '../network/network-model.js';
 import type { Control } from '../operation/control.js';
 import type { SettledSite } from './settled-site.js';
@@ -44,12 +45,29 @@ export function judge(study: Judged, bank: Bank, control: Control): Judgement {
 }
 
 /**
- * The verdict with what the record itself leaves open: an unknown old bank is at best `watch`.
+ * Does the load ask for more than a short circuit at the bank's bus would give: then nothing computed from the fault
+ * level means much.
  * @param study site and record
+ * @param shortCircuitMinMva least fault level at the bank's bus [MVA]
+ * @returns the greatest load [kVA], or null where the supply is stronger
+ * @source method-limits
+ */
+export function overwhelmingKva(study: Judged, shortCircuitMinMva: number): number | null {
+  const loadKva = (Math.sqrt(3) * study.site.nominalV * study.model.loadA) / 1000;
+  return loadKva > shortCircuitMinMva * 1000 ? loadKva : null;
+}
+
+/**
+ * The verdict with what the record itself leaves open: an unknown old bank, or more load than the supply could carry, is
+ * at best `watch`.
+ * @param study settled site and its network
  * @param judgement the bank judged
  * @returns overall verdict
  * @source method-controller
  */
 export function overallVerdict(study: Judged, judgement: { verdict: Verdict }): Verdict {
-  return study.site.recordedBank.state === 'unknown' ? graver(judgement.verdict, 'watch') : judgement.verdict;
+  if (judgement.verdict !== 'clear') return judgement.verdict;
+  const { shortCircuitMinMva } = summarizeNetwork(study.model, []);
+  const open = study.site.recordedBank.state === 'unknown' || overwhelmingKva(study, shortCircuitMinMva) !== null;
+  return open ? graver(judgement.verdict, 'watch') : judgement.verdict;
 }

@@ -5,6 +5,7 @@ import { InputProblem, type Problem, type Remark, remark } from '../problem.js';
 import { compensatedSum } from '../quantity/compensated-sum.js';
 import type { LoadRecord } from '../record/load-record.js';
 import type { Supply, SupplyInput } from '../supply/supply.js';
+import { loadProblems } from './load-problems.js';
 import { settleBank } from './settle-bank.js';
 import type { SettledSite } from './settled-site.js';
 import type { Site } from './site.js';
@@ -56,7 +57,7 @@ class Defaults {
  * @source method-conventions
  */
 export function settleSite(site: Site, record: LoadRecord | null): Settled {
-  const problems = contradictions(site);
+  const problems = [...contradictions(site), ...loadProblems(site)];
   if (problems.length > 0) throw new InputProblem(problems);
   const defaults = new Defaults();
   const hasTransformer = (site.supply.transformers ?? []).length > 0;

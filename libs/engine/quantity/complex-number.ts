@@ -5,40 +5,37 @@ export interface ComplexNumber {
 }
 
 /**
- * a + b.
- * @param a first term
- * @param b second term
- * @returns the sum
+ * Sum of complex numbers.
+ * @param a first number
+ * @param b second number
+ * @returns a + b
  */
-export function cAdd(a: ComplexNumber, b: ComplexNumber): ComplexNumber {
-  return { re: a.re + b.re, im: a.im + b.im };
-}
+export const cAdd = (a: ComplexNumber, b: ComplexNumber): ComplexNumber => ({ re: a.re + b.re, im: a.im + b.im });
 
 /**
- * a − b.
- * @param a first term
- * @param b what is taken away
- * @returns the difference
+ * Difference of complex numbers.
+ * @param a first number
+ * @param b second number
+ * @returns a − b
  */
-export function cSubtract(a: ComplexNumber, b: ComplexNumber): ComplexNumber {
-  return { re: a.re - b.re, im: a.im - b.im };
-}
+export const cSubtract = (a: ComplexNumber, b: ComplexNumber): ComplexNumber => ({ re: a.re - b.re, im: a.im - b.im });
 
 /**
- * a · b.
- * @param a first factor
- * @param b second factor
- * @returns the product
+ * Product of complex numbers.
+ * @param a first number
+ * @param b second number
+ * @returns a · b
  */
-export function cMultiply(a: ComplexNumber, b: ComplexNumber): ComplexNumber {
-  return { re: a.re * b.re - a.im * b.im, im: a.re * b.im + a.im * b.re };
-}
+export const cMultiply = (a: ComplexNumber, b: ComplexNumber): ComplexNumber => ({
+  re: a.re * b.re - a.im * b.im,
+  im: a.re * b.im + a.im * b.re,
+});
 
 /**
- * a / b.
- * @param a dividend
- * @param b divisor, not 0
- * @returns the quotient
+ * Quotient of complex numbers.
+ * @param a first number
+ * @param b second number
+ * @returns a / b
  */
 export function cDivide(a: ComplexNumber, b: ComplexNumber): ComplexNumber {
   const square = b.re * b.re + b.im * b.im;
@@ -46,20 +43,16 @@ export function cDivide(a: ComplexNumber, b: ComplexNumber): ComplexNumber {
 }
 
 /**
- * k · a, k real.
- * @param a complex factor
+ * Multiple of a complex number.
+ * @param a the number
  * @param k real factor
- * @returns the product
+ * @returns k · a, k real
  */
-export function cScale(a: ComplexNumber, k: number): ComplexNumber {
-  return { re: k * a.re, im: k * a.im };
-}
+export const cScale = (a: ComplexNumber, k: number): ComplexNumber => ({ re: k * a.re, im: k * a.im });
 
 /**
- * |a|.
- * @param a complex number
- * @returns its magnitude
+ * Magnitude of a complex number.
+ * @param a the number
+ * @returns |a|
  */
-export function cAbs(a: ComplexNumber): number {
-  return Math.sqrt(a.re * a.re + a.im * a.im);
-}
+export const cAbs = (a: ComplexNumber): number => Math.sqrt(a.re * a.re + a.im * a.im);
