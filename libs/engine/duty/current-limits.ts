@@ -1,19 +1,23 @@
-/** Current limits of one row of IEEE 519: bands by order and the total, % of I_L. */
+import { type LimitChoice, type LimitEdition, ownLimitsName, tighter } from './limit-editions.js';
+import { ownPct } from './voltage-limits.js';
+
+/** Current limits: bands by order and the total, % of I_L. */
 export interface CurrentLimits {
   source: string;
-  totalPct: number;
+  /** null where there is none */
+  totalPct: number | null;
   /**
    * @param orderH order h
-   * @returns limit on I_h, % of I_L
+   * @returns limit on I_h, % of I_L; null where there is none
    */
-  orderPct(orderH: number): number;
+  orderPct(orderH: number): number | null;
 }
 
 /** First order above each band, as the table's columns are bounded. */
 const BAND_ENDS_H = [11, 17, 23, 35, Number.POSITIVE_INFINITY];
 
-/** I_sc/I_L from, limits per band and total, % of I_L; systems up to 69 kV. */
-const IEEE_519_2022: readonly { from: number; bandsPct: readonly number[]; totalPct: number }[] = [
+/** I_sc/I_L from, limits per band and total, % of I_L; systems up to 69 kV, the same in both editions. */
+const IEEE_519: readonly { from: number; bandsPct: readonly number[]; totalPct: number }[] = [
   { from: 0, bandsPct: [4, 2, 1.5, 0.6, 0.3], totalPct: 5 },
   { from: 20, bandsPct: [7, 3.5, 2.5, 1, 0.5], totalPct: 8 },
   { from: 50, bandsPct: [10, 4.5, 4, 1.5, 0.7], totalPct: 12 },
@@ -21,23 +25,46 @@ const IEEE_519_2022: readonly { from: number; bandsPct: readonly number[]; total
   { from: 1000, bandsPct: [15, 7, 6, 2.5, 1.4], totalPct: 20 },
 ];
 
-/** Even orders up to here have half the band's limit (2022). */
-const HALVED_EVEN_TO_H = 6;
+/** What an even order has of its band's limit: to the order, and above it. */
+const EVEN_SHARES: Partial<Record<LimitEdition, { toH: number; share: number }>> = {
+  'IEEE 519-2022': { toH: 6, share: 0.5 },
+  'IEEE 519-2014': { toH: 50, share: 0.25 },
+};
 
 /**
- * IEEE 519-2022 current limits at a point of coupling: the row with the greatest lower bound ≤ I_sc/I_L.
+ * Current limits at a point of coupling: IEEE 519's row with the greatest lower bound ≤ I_sc/I_L, even orders as the
+ * edition has them; own rows tighten it. The iec editions have none but the user's own.
  * @param shortCircuitRatio I_sc/I_L at the least fault level
- * @returns limits, % of I_L
- * @source ieee-519-2022
+ * @param choice edition and own rows; IEEE 519-2022 where absent
+ * @returns limits, % of I_L; null where nothing limits the current
+ * @source ieee-519-2022, ieee-519-2014
  */
-export function currentLimits(shortCircuitRatio: number): CurrentLimits {
-  const row = IEEE_519_2022.filter(({ from }) => shortCircuitRatio >= from).at(-1) ?? IEEE_519_2022[0]!;
+export function currentLimits(shortCircuitRatio: number): CurrentLimits;
+export function currentLimits(shortCircuitRatio: number, choice: LimitChoice): CurrentLimits | null;
+export function currentLimits(
+  shortCircuitRatio: number,
+  choice: LimitChoice = { edition: 'IEEE 519-2022', own: null },
+): CurrentLimits | null {
+  const { edition, own } = choice;
+  const even = EVEN_SHARES[edition];
+  const table = even === undefined ? null : tableLimits(edition, shortCircuitRatio, even);
+  if (own?.current === undefined && own?.currentDistortionPct === undefined) return table;
+  const name = ownLimitsName(own);
   return {
-    source: 'IEEE 519-2022',
+    source: table === null ? name : `${table.source} and ${name}`,
+    totalPct: tighter(table?.totalPct, own.currentDistortionPct),
+    orderPct: (orderH) => tighter(table?.orderPct(orderH), ownPct(own.current, orderH)),
+  };
+}
+
+function tableLimits(source: string, shortCircuitRatio: number, even: { toH: number; share: number }): CurrentLimits {
+  const row = IEEE_519.filter(({ from }) => shortCircuitRatio >= from).at(-1) ?? IEEE_519[0]!;
+  return {
+    source,
     totalPct: row.totalPct,
     orderPct: (orderH) => {
       const band = row.bandsPct[BAND_ENDS_H.findIndex((end) => orderH < end)]!;
-      return orderH % 2 === 0 && orderH <= HALVED_EVEN_TO_H ? band / 2 : band;
+      return orderH % 2 === 0 && orderH <= even.toH ? band * even.share : band;
     },
   };
 }

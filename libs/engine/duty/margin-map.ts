@@ -2,6 +2,7 @@ import type { Bank } from '../layout/bank.js';
 import type { Level } from '../layout/levels.js';
 import { bankModel, eachFlow } from '../network/flow.js';
 import type { NetworkModel } from '../network/network-model.js';
+import type { LimitChoice } from './limit-editions.js';
 import type { RuleSet } from './rules.js';
 import { voltageLimits } from './voltage-limits.js';
 
@@ -28,9 +29,9 @@ export function marginMap(
   model: NetworkModel,
   bank: Bank,
   levels: Level[],
-  basis: { rules: RuleSet; voltages: { nominalV: number }; emcClass: 1 | 2 | 3 },
+  basis: { rules: RuleSet; voltages: { nominalV: number }; emcClass: 1 | 2 | 3; limits?: LimitChoice },
 ): MarginMap {
-  const limits = voltageLimits(basis.rules, basis.voltages.nominalV, basis.emcClass);
+  const limits = voltageLimits(basis.rules, basis.voltages.nominalV, basis.emcClass, basis.limits);
   const judged = [...model.excitation.ordersH.entries()].flatMap(([i, orderH]) => {
     const limitPct = limits.orderPct(orderH);
     return limitPct === null ? [] : [{ i, orderH, limitPct }];

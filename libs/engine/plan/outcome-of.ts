@@ -1,15 +1,22 @@
+import { ageing } from '../duty/ageing.js';
+import { devices } from '../duty/devices.js';
 import { type JudgeBasis, type Judgement, judgeBank } from '../duty/judge-bank.js';
 import { marginMap } from '../duty/margin-map.js';
+import { type MeasuredCheck, measuredCheck } from '../duty/measured-check.js';
 import { CAPACITOR_RULES, graver, type Verdict } from '../duty/rules.js';
 import type { Bank } from '../layout/bank.js';
 import { bankLevels, summarizeBank } from '../layout/levels.js';
+import type { MeasuredDistortion } from '../network/loads.js';
 import type { Control } from '../operation/control.js';
 import { summarizeOperation } from '../operation/operation.js';
 import type { Remark } from '../problem.js';
 import { cautions } from './cautions.js';
+import { deviceFigures } from './device-figures.js';
 import { figures } from './figures.js';
+import { limitsPoint, pointAssumption } from './limits-point.js';
 import type { Outcome, Rival } from './outcome.js';
 import { reasons } from './reasons.js';
+import { type Beside, reasonsBeside, verdictBeside } from './reasons-beside.js';
 import type { Result } from './result.js';
 import { type Operated, operate, type Study } from './study.js';
 
@@ -43,6 +50,18 @@ export function outcomeOf(
   const conductorMinA =
     (CAPACITOR_RULES[study.site.rules].conductorRatio * bankSummary.effectiveKvar * 1000) /
     (Math.sqrt(3) * study.site.nominalV);
+  const basis = basisOf(study, control);
+  const facts = { ...study.site.facts, bank: kind === 'plan' ? null : study.site.facts.bank };
+  const equipment =
+    bank.groups.length === 0
+      ? null
+      : devices(study.model, bank, levels, { judge: basis, judgement, control, conductorMinA, facts });
+  const beside: Beside = {
+    limits: limitsPoint(study),
+    devices: equipment?.rows ?? [],
+    ageing: ageing(study.model, bank, basis, facts.bank),
+    measured: facts.measured === null ? null : measuredOf(study, kind, bank, facts.measured),
+  };
   const result: Result = {
     record: study.recordSummary,
     requirement: study.requirement,
@@ -50,19 +69,30 @@ export function outcomeOf(
     control,
     operation: summarizeOperation(operated, study.months, study.target, levels),
     network: judgement.network,
+    limits: beside.limits,
     duties: judgement.duties,
+    devices: beside.devices,
     charge: { stages: judgement.charge },
     inrush: { stages: judgement.inrush },
     conductorMinA,
+    ageing: beside.ageing,
+    measured: beside.measured,
     robustness: null,
     money: null,
-    verdict: overallVerdict(study, judgement),
-    reasons: [...said.reasons, ...reasons(study, bank, operated, judgement)],
-    assumptions: [...study.assumptions, ...said.assumptions],
+    verdict: graver(overallVerdict(study, judgement), verdictBeside(beside)),
+    reasons: [
+      ...said.reasons,
+      ...reasons(study, bank, operated, judgement),
+      ...reasonsBeside(study, bank, control, beside),
+    ],
+    assumptions: [...study.assumptions, ...pointAssumption(study, beside.limits), ...said.assumptions],
     cautions: cautions(judgement),
     figures: [],
   };
-  result.figures = figures(study, bank, operated, result);
+  result.figures = [
+    ...figures(study, bank, operated, result),
+    ...(equipment === null ? [] : deviceFigures(study, bank, control, equipment)),
+  ];
   return {
     kind,
     site: study.site,
@@ -89,6 +119,7 @@ export function basisOf(study: Study, control: Control): JudgeBasis {
     frequencyHz: site.frequencyHz,
     voltages: { nominalV: site.nominalV, highestV: site.highestV },
     emcClass: site.emcClass,
+    limits: site.limits,
     supply: site.supply,
     loads: site.loads,
     reconnectDelayS: control.reconnectDelayS,
@@ -116,6 +147,12 @@ export function judge(study: Study, bank: Bank, control: Control): Judgement {
  */
 export function overallVerdict(study: Study, judgement: Judgement): Verdict {
   return study.site.recordedBank.state === 'unknown' ? graver(judgement.verdict, 'watch') : judgement.verdict;
+}
+
+// With a bank in, a measurement says something of the bank that was in: the site's own, not the one that is proposed.
+function measuredOf(study: Study, kind: Outcome['kind'], bank: Bank, measured: MeasuredDistortion): MeasuredCheck {
+  const compared = kind === 'plan' ? { ...bank, groups: [] } : bank;
+  return measuredCheck(study.model, compared, bankLevels(compared, study.site.nominalV), measured);
 }
 
 function series(study: Study, operated: Operated): Outcome['series'] {

@@ -1,5 +1,7 @@
+import type { LimitChoice } from '../duty/limit-editions.js';
 import type { MarginMap } from '../duty/margin-map.js';
 import type { RuleSet } from '../duty/rules.js';
+import type { SiteFacts } from '../duty/site-facts.js';
 import type { Bank } from '../layout/bank.js';
 import type { Loads } from '../network/loads.js';
 import type { Topology } from '../network/topology.js';
@@ -28,6 +30,8 @@ export interface SettledSite {
   /** null where the site has one bus */
   topology: Topology | null;
   emcClass: 1 | 2 | 3;
+  limits: LimitChoice;
+  facts: SiteFacts;
 }
 
 /** Columns of the simulated record, one entry a valid interval, length n. */

@@ -1,6 +1,9 @@
+import type { Ageing } from '../duty/ageing.js';
 import type { ChargeStage } from '../duty/charge.js';
+import type { DeviceRow } from '../duty/device-row.js';
 import type { Duty } from '../duty/duty-row.js';
 import type { InrushStage } from '../duty/inrush.js';
+import type { MeasuredCheck } from '../duty/measured-check.js';
 import type { Verdict } from '../duty/rules.js';
 import type { BankSummary } from '../layout/levels.js';
 import type { NetworkSummary } from '../network/network-check.js';
@@ -10,6 +13,7 @@ import type { Remark } from '../problem.js';
 import type { RecordSummary } from '../record/record-summary.js';
 import type { RequirementSummary } from '../requirement/requirement.js';
 import type { Figure } from './figure.js';
+import type { LimitsPoint } from './limits-point.js';
 
 /** The answer of `plan` and `assess`. */
 export interface Result {
@@ -19,10 +23,18 @@ export interface Result {
   control: Control;
   operation: OperationSummary;
   network: NetworkSummary;
+  /** the edition judged by, and the point it was judged at */
+  limits: LimitsPoint;
   duties: Duty[];
+  /** every device with its duty, the rating that asks for, and what the site has */
+  devices: DeviceRow[];
   charge: { stages: ChargeStage[] };
   inrush: { stages: InrushStage[] };
   conductorMinA: number;
+  /** judged beside the corners, not among them */
+  ageing: Ageing;
+  /** null where nothing was measured */
+  measured: MeasuredCheck | null;
   robustness: null;
   money: null;
   verdict: Verdict;

@@ -1,0 +1,103 @@
+import type { Ageing } from '../duty/ageing.js';
+import { type DeviceRow, shortDevices, shortVerdict } from '../duty/device-row.js';
+import type { MeasuredCheck } from '../duty/measured-check.js';
+import { graver, type Verdict } from '../duty/rules.js';
+import type { Bank } from '../layout/bank.js';
+import type { Control } from '../operation/control.js';
+import { type Remark, remark } from '../problem.js';
+import type { LimitsPoint } from './limits-point.js';
+import type { Study } from './study.js';
+
+/** What is judged beside the network and the duties. */
+export interface Beside {
+  limits: LimitsPoint;
+  devices: DeviceRow[];
+  ageing: Ageing;
+  measured: MeasuredCheck | null;
+}
+
+/**
+ * What devices and measurements make of the verdict: a device short by a standard rules the bank out, by custom asks for a
+ * second look; so does a reading above every corner of the model.
+ * @param beside devices, ageing, measurement
+ * @returns `clear` where nothing speaks against it; ageing never counts
+ * @source method-limits
+ */
+export function verdictBeside({ devices, measured }: Beside): Verdict {
+  const short = shortDevices(devices).reduce<Verdict>((worst, row) => graver(worst, shortVerdict(row)), 'clear');
+  const above = (measured?.rows ?? []).some(({ standing }) => standing === 'above');
+  return graver(short, above ? 'watch' : 'clear');
+}
+
+/**
+ * What devices, measurement, ageing, fast loads and the point judged give to say.
+ * @param study site and record
+ * @param bank the bank
+ * @param control settings
+ * @param beside devices, ageing, measurement
+ * @returns reasons, without words
+ * @source method-limits
+ */
+export function reasonsBeside(study: Study, bank: Bank, control: Control, beside: Beside): Remark[] {
+  return [
+    ...shortDevices(beside.devices).map(deviceReason),
+    ...measuredReasons(beside.measured, study.site.facts.measured?.bankKvar ?? 0),
+    ...(bank.groups.length === 0 ? [] : [...ageingReasons(beside.ageing), ...loadReasons(study, control)]),
+    ...pointReasons(beside.limits),
+  ];
+}
+
+function deviceReason(row: DeviceRow): Remark {
+  const values: Record<string, number | string> = { device: row.device };
+  if (row.group !== null) values.group = row.group + 1;
+  if (row.fitted !== null) values.value = row.fitted;
+  const { least, most } = row;
+  const passed =
+    typeof row.fitted === 'number' && typeof most === 'number' && row.fitted > most ? most : (least ?? most);
+  if (passed !== null) values.limit = passed;
+  const code = shortVerdict(row) === 'avoid' ? 'device.short' : 'device.shortByPractice';
+  return remark(code, values, { unit: row.unit, source: row.source });
+}
+
+function measuredReasons(measured: MeasuredCheck | null, bankKvar: number): Remark[] {
+  if (measured === null) return [];
+  if (measured.levelKvar === null)
+    return [remark('measured.noLevel', { bankKvar }, { path: 'loads.measured.bankKvar' })];
+  const off = measured.rows.filter(({ standing }) => standing !== 'within');
+  return off.map(({ quantity, orderH, unit, standing, low, high, ...row }) =>
+    remark(
+      standing === 'above' ? 'measured.above' : 'measured.below',
+      { quantity, orderH, value: row.measured, limit: standing === 'above' ? high : low, bus: measured.bus },
+      { unit, path: 'loads.measured' },
+    ),
+  );
+}
+
+function ageingReasons({ cases }: Ageing): Remark[] {
+  return cases
+    .filter(({ verdict }) => verdict === 'avoid')
+    .map(({ group, capacitanceFactor, tunedOrderH }) => {
+      const values: Record<string, number | string> = { leftPct: 100 * capacitanceFactor };
+      if (group !== null) values.group = group + 1;
+      if (tunedOrderH !== null) values.tunedOrderH = tunedOrderH;
+      return remark('ageing.overLimit', values, { source: 'practice' });
+    });
+}
+
+function loadReasons(study: Study, control: Control): Remark[] {
+  const { fast, photovoltaicKw } = study.site.facts;
+  const found = fast.map(({ name, swingS, swingKvar }) => {
+    const values: Record<string, number | string> = { name, stepDelayS: control.stepDelayS };
+    if (swingS !== undefined) values.swingS = swingS;
+    if (swingKvar !== undefined) values.swingKvar = swingKvar;
+    return remark('loads.fast', values, { path: 'loads.fast' });
+  });
+  if (photovoltaicKw > 0)
+    found.push(remark('supply.photovoltaic', { photovoltaicKw }, { path: 'supply.photovoltaicKw' }));
+  return found;
+}
+
+function pointReasons({ voltage, points, couplingPoint, atCouplingPoint }: LimitsPoint): Remark[] {
+  if (atCouplingPoint) return [];
+  return [remark('limits.notCouplingPoint', { edition: voltage, point: points.join(', '), couplingPoint })];
+}
