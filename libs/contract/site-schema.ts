@@ -147,3 +147,6 @@ export const siteSchema = z
   })
   .check(rules)
   .meta({ id: 'Site' });
+
+/** A site as the schema reads it, its quantities in whichever form they were given. */
+export type SiteGiven = z.output<typeof siteSchema>;

@@ -1,4 +1,3 @@
-import type * as z from 'zod';
 import {
   awgAreaMm2,
   CABLE_REACTANCE_OHM_PER_KM,
@@ -13,12 +12,10 @@ import {
   type SupplyInput,
   type Understood,
 } from '#libs/engine/index.js';
-import type { siteSchema } from './site-schema.js';
+import type { SiteGiven } from './site-schema.js';
 
-/** A site as the schema reads it, its quantities in whichever form they were given. */
-type Given = z.output<typeof siteSchema>;
-type GivenStage = NonNullable<Given['bank']>['stages'][number];
-type GivenNetwork = NonNullable<Given['network']>;
+type GivenStage = NonNullable<SiteGiven['bank']>['stages'][number];
+type GivenNetwork = NonNullable<SiteGiven['network']>;
 
 /**
  * A site with every quantity in the one form the engine computes with; what stood in another form is listed.
@@ -26,7 +23,7 @@ type GivenNetwork = NonNullable<Given['network']>;
  * @param json what was read, for the units a person wrote
  * @returns the site, `understood` absent where nothing was converted
  */
-export function understandSite(given: Given, json: unknown): Site {
+export function understandSite(given: SiteGiven, json: unknown): Site {
   const said = new Said(given.frequencyHz);
   const { bank, network, supply, ...rest } = given;
   const site: Site = { ...rest, supply: said.supply(supply) };
@@ -51,14 +48,14 @@ class Said {
     return value;
   }
 
-  supply(given: Given['supply']): SupplyInput {
+  supply(given: SiteGiven['supply']): SupplyInput {
     const { faultLevelMva, faultLevel, xOverR, ...rest } = given;
     const supply = { ...rest, faultLevelMva: faultLevelMva ?? this.#faultLevel(faultLevel!) };
     if (xOverR !== undefined) supply.rOverX = this.#say('supply.xOverR', `X/R of ${xOverR}`, 1 / xOverR, '');
     return supply;
   }
 
-  #faultLevel(given: NonNullable<Given['supply']['faultLevel']>): SupplyInput['faultLevelMva'] {
+  #faultLevel(given: NonNullable<SiteGiven['supply']['faultLevel']>): SupplyInput['faultLevelMva'] {
     const { maxMva, minMva, maxKa, minKa, minOhm, maxOhm, atKv = 0 } = given;
     const ends = [
       { key: 'max', mva: maxMva, ka: maxKa, ohm: minOhm },

@@ -171,7 +171,7 @@ function deviceWords(row: DeviceRow, severalGroups: boolean): DeviceWords {
     device: `${device}${group}`,
     met: filled(met, row),
     need: filled(need, row),
-    fitted: row.fitted === null ? 'not entered' : shown(row.fitted, row.unit),
+    fitted: row.fitted === null ? (row.state === 'noted' ? '–' : 'not entered') : shown(row.fitted, row.unit),
     state: DEVICE_STATE_WORDS[row.state],
     basis: row.source === 'practice' ? 'common practice' : row.source,
   };

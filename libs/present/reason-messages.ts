@@ -118,6 +118,12 @@ export const REASON_MESSAGES: Messages = {
     subject: '{device}[ of group {group}] falls short of common practice',
     consequence: 'Fit what the table of devices asks for, or accept it with a reason.',
   },
+  'device.noResponse': {
+    level: 'to be accepted',
+    text: '{device}: the controller answers to {value}, and the smallest stage gives {limit} at its threshold.',
+    subject: '{device}: the smallest stage gives less than the controller answers to',
+    consequence: 'Take a transformer of a smaller ratio, or a larger smallest stage.',
+  },
   'measured.noLevel': {
     level: 'to be noted',
     text: 'A measurement was given with {bankKvar} connected, which is no level of this bank, so it is not compared.',
@@ -139,6 +145,11 @@ export const REASON_MESSAGES: Messages = {
     level: 'to be accepted',
     text: 'With {leftPct} of the capacitance left[ in one stage of group {group}] the bank passes a limit[, tuned to order {tunedOrderH}].',
     consequence: 'Measure the capacitance every year and take a stage out at the value printed.',
+  },
+  'ageing.takeOut': {
+    level: 'to be accepted',
+    text: 'A stage of group {group} was measured at {capacitanceUf} a phase; it must come out at {comesOutUf}.',
+    consequence: 'Take the stage out, or renew its capacitor.',
   },
   'loads.fast': {
     level: 'to be noted',

@@ -55,7 +55,7 @@ const FACTOR_WIDTH = 1e-4;
  * @param basis what it is judged by
  * @param given the bank of the site file, which says whether it is installed and what was measured; null for a new one
  * @returns cases and the end of each group's stages; none for an empty bank
- * @source method-limits
+ * @source method-ageing
  */
 export function ageing(model: NetworkModel, bank: Bank, basis: JudgeBasis, given: BankInput | null): Ageing {
   if (bank.groups.length === 0) return { cases: [], stages: [] };

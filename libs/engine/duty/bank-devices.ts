@@ -1,11 +1,10 @@
 import type { Bank } from '../layout/bank.js';
 import { effectiveKvar } from '../layout/stage.js';
-import type { Control } from '../operation/control.js';
 import type { CabinetHeat } from './cabinet-heat.js';
 import { type DeviceRow, deviceRow, yesOrNo } from './device-row.js';
 import { FAULT_CURRENT_EDITION, type FaultCurrent } from './fault-current.js';
 import { AMBIENT_CATEGORIES, CAPACITOR_RULES, type RuleSet } from './rules.js';
-import type { BankPlace, CurrentTransformer, SiteFacts } from './site-facts.js';
+import type { BankPlace, SiteFacts } from './site-facts.js';
 
 /** Instantaneous trip of the upstream device, as a multiple of the bank's current; common practice, no source. */
 export const INSTANTANEOUS_RATIO = 10;
@@ -17,20 +16,17 @@ export interface BankDeviceBasis {
   rules: RuleSet;
   nominalV: number;
   conductorMinA: number;
-  control: Control;
   fault: FaultCurrent;
   heat: CabinetHeat;
   facts: SiteFacts;
-  /** a generator may feed the bus */
-  generator: boolean;
 }
 
 /**
- * Devices of the bank as a whole: place, upstream device, conductors, protection, cabinet, current transformer, generator.
+ * Devices of the bank as a whole: place, upstream device, conductors, protection, cabinet.
  * @param bank the bank
  * @param basis rules, fault currents, heat, and what the site has
- * @returns rows in the order of the line from the supply to the controller
- * @source method-limits, practice
+ * @returns rows
+ * @source method-devices, practice
  */
 export function bankDevices(bank: Bank, basis: BankDeviceBasis): DeviceRow[] {
   return [
@@ -38,8 +34,6 @@ export function bankDevices(bank: Bank, basis: BankDeviceBasis): DeviceRow[] {
     ...protectionRows(basis),
     ...placeRows(bank, basis.facts),
     ...cabinetRows(basis),
-    ...transformerRows(bank, basis),
-    ...generatorRows(bank, basis),
   ];
 }
 
@@ -218,85 +212,4 @@ function enclosure({ indoors, enclosureIp }: BankPlace): Pick<DeviceRow, 'least'
   const digit = (ip: string, at: number): number => Number(ip[at]) || 0;
   const enough = [2, 3].every((at) => digit(fitted, at) >= digit(least, at));
   return { least, fitted, state: enough ? 'fits' : 'short' };
-}
-
-function transformerRows(bank: Bank, { facts, nominalV, control }: BankDeviceBasis): DeviceRow[] {
-  if (bank.groups.every((group) => group.fixed)) return [];
-  const given = facts.currentTransformer;
-  const practice = { basis: 'practice', source: 'practice' } as const;
-  return [
-    deviceRow({
-      device: 'currentTransformer.place',
-      ...practice,
-      least: 'incomer',
-      fitted: given?.place ?? null,
-      ...(given?.place === undefined ? {} : { state: given.place === 'incomer' ? 'fits' : 'short' }),
-    }),
-    deviceRow({
-      device: 'currentTransformer.response',
-      basis: 'site',
-      source: 'site',
-      value: given === null ? null : responseA(bank, nominalV, control, given),
-      ...sensitivity(bank, nominalV, control, given),
-    }),
-  ];
-}
-
-/**
- * Current at the transformer's secondary at which the controller has to answer: a·q_min/(√3·U)·(I_s/I_p).
- * @param bank the bank
- * @param nominalV U [V]
- * @param control response ratio a
- * @param transformer ratio; of the sum where incomers are summed
- * @returns I [A]
- * @source method-controller
- */
-export function responseA(bank: Bank, nominalV: number, control: Control, transformer: CurrentTransformer): number {
-  const { ratioPrimaryA, ratioSecondaryA } = transformer;
-  const primaryA = (control.responseRatio * smallestKvar(bank, nominalV) * 1000) / (Math.sqrt(3) * nominalV);
-  return (primaryA * ratioSecondaryA) / ratioPrimaryA;
-}
-
-/**
- * Effective kvar of the smallest stage that is switched.
- * @param bank the bank
- * @param nominalV U [V]
- * @returns q_min [kvar]
- * @source method-bank
- */
-export function smallestKvar(bank: Bank, nominalV: number): number {
-  return Math.min(...bank.groups.filter(({ fixed }) => !fixed).map((group) => effectiveKvar(group, nominalV)));
-}
-
-function sensitivity(
-  bank: Bank,
-  nominalV: number,
-  control: Control,
-  given: CurrentTransformer | null,
-): Pick<DeviceRow, 'most' | 'fitted' | 'unit' | 'state'> {
-  if (given === null) return { most: null, fitted: null, unit: 'A', state: 'open' };
-  const most = responseA(bank, nominalV, control, given);
-  const fitted = given.sensitivityA ?? null;
-  const state = fitted === null ? 'open' : fitted <= most * (1 + 1e-9) ? 'fits' : 'short';
-  return { most, fitted, unit: 'A', state };
-}
-
-function generatorRows(bank: Bank, { facts, generator, nominalV }: BankDeviceBasis): DeviceRow[] {
-  const { holdOff, allowedKvar } = facts.generator;
-  if (!generator && holdOff === undefined && allowedKvar === undefined) return [];
-  const kvar = bank.groups.reduce((sum, group) => sum + group.count * effectiveKvar(group, nominalV), 0);
-  const held = holdOff === true || (allowedKvar !== undefined && allowedKvar >= kvar);
-  const known = holdOff !== undefined || allowedKvar !== undefined;
-  return [
-    deviceRow({
-      device: 'generator.holdOff',
-      value: kvar,
-      most: allowedKvar ?? null,
-      unit: 'kvar',
-      fitted: yesOrNo(holdOff),
-      state: held ? 'fits' : known ? 'short' : 'open',
-      basis: 'practice',
-      source: 'practice',
-    }),
-  ];
 }

@@ -35,7 +35,7 @@ export interface CabinetHeat {
  * @param demand loss of its reactors
  * @param place where it stands
  * @returns heat [W] and air [m³/h]
- * @source practice, derived
+ * @source derived, practice
  */
 export function cabinetHeat(
   bank: Bank,

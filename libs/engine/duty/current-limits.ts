@@ -1,4 +1,4 @@
-import { type LimitChoice, type LimitEdition, ownLimitsName, tighter } from './limit-editions.js';
+import { type LimitChoice, ownLimitsName, tighter } from './limit-editions.js';
 import { ownPct } from './voltage-limits.js';
 
 /** Current limits: bands by order and the total, % of I_L. */
@@ -26,45 +26,51 @@ const IEEE_519: readonly { from: number; bandsPct: readonly number[]; totalPct: 
 ];
 
 /** What an even order has of its band's limit: to the order, and above it. */
-const EVEN_SHARES: Partial<Record<LimitEdition, { toH: number; share: number }>> = {
+const EVEN_SHARES = {
   'IEEE 519-2022': { toH: 6, share: 0.5 },
   'IEEE 519-2014': { toH: 50, share: 0.25 },
-};
+} as const;
 
 /**
- * Current limits at a point of coupling: IEEE 519's row with the greatest lower bound ≤ I_sc/I_L, even orders as the
- * edition has them; own rows tighten it. The iec editions have none but the user's own.
+ * IEEE 519 current limits at a point of coupling: the row with the greatest lower bound ≤ I_sc/I_L, even orders as the
+ * edition has them.
  * @param shortCircuitRatio I_sc/I_L at the least fault level
- * @param choice edition and own rows; IEEE 519-2022 where absent
+ * @param edition of IEEE 519
+ * @returns limits, % of I_L
+ * @source ieee-519-2022, ieee-519-2014
+ */
+export function currentLimits(
+  shortCircuitRatio: number,
+  edition: 'IEEE 519-2022' | 'IEEE 519-2014' = 'IEEE 519-2022',
+): CurrentLimits {
+  const row = IEEE_519.filter(({ from }) => shortCircuitRatio >= from).at(-1) ?? IEEE_519[0]!;
+  const even = EVEN_SHARES[edition];
+  return {
+    source: edition,
+    totalPct: row.totalPct,
+    orderPct: (orderH) => {
+      const band = row.bandsPct[BAND_ENDS_H.findIndex((end) => orderH < end)]!;
+      return orderH % 2 === 0 && orderH <= even.toH ? band * even.share : band;
+    },
+  };
+}
+
+/**
+ * Current limits of a choice: the edition's, tightened by own rows. The iec editions have none but the user's own.
+ * @param shortCircuitRatio I_sc/I_L at the least fault level
+ * @param choice edition and own rows
  * @returns limits, % of I_L; null where nothing limits the current
  * @source ieee-519-2022, ieee-519-2014
  */
-export function currentLimits(shortCircuitRatio: number): CurrentLimits;
-export function currentLimits(shortCircuitRatio: number, choice: LimitChoice): CurrentLimits | null;
-export function currentLimits(
-  shortCircuitRatio: number,
-  choice: LimitChoice = { edition: 'IEEE 519-2022', own: null },
-): CurrentLimits | null {
+export function chosenCurrentLimits(shortCircuitRatio: number, choice: LimitChoice): CurrentLimits | null {
   const { edition, own } = choice;
-  const even = EVEN_SHARES[edition];
-  const table = even === undefined ? null : tableLimits(edition, shortCircuitRatio, even);
+  const isIeee = edition === 'IEEE 519-2022' || edition === 'IEEE 519-2014';
+  const table = isIeee ? currentLimits(shortCircuitRatio, edition) : null;
   if (own?.current === undefined && own?.currentDistortionPct === undefined) return table;
   const name = ownLimitsName(own);
   return {
     source: table === null ? name : `${table.source} and ${name}`,
     totalPct: tighter(table?.totalPct, own.currentDistortionPct),
     orderPct: (orderH) => tighter(table?.orderPct(orderH), ownPct(own.current, orderH)),
-  };
-}
-
-function tableLimits(source: string, shortCircuitRatio: number, even: { toH: number; share: number }): CurrentLimits {
-  const row = IEEE_519.filter(({ from }) => shortCircuitRatio >= from).at(-1) ?? IEEE_519[0]!;
-  return {
-    source,
-    totalPct: row.totalPct,
-    orderPct: (orderH) => {
-      const band = row.bandsPct[BAND_ENDS_H.findIndex((end) => orderH < end)]!;
-      return orderH % 2 === 0 && orderH <= even.toH ? band * even.share : band;
-    },
   };
 }

@@ -102,7 +102,7 @@ const JUDGED_BY_DUTIES: readonly DeviceName[] = [
  * Devices that fall short and are judged nowhere else.
  * @param rows all devices
  * @returns the rows that count in the verdict: `avoid` where the basis is a standard or derived, else `watch`
- * @source method-limits
+ * @source method-devices
  */
 export function shortDevices(rows: readonly DeviceRow[]): DeviceRow[] {
   return rows.filter(({ device, state }) => state === 'short' && !JUDGED_BY_DUTIES.includes(device));
@@ -112,7 +112,7 @@ export function shortDevices(rows: readonly DeviceRow[]): DeviceRow[] {
  * Does a short device rule the bank out, or ask for a second look.
  * @param row a short device
  * @returns `avoid` or `watch`
- * @source method-limits
+ * @source method-devices
  */
 export function shortVerdict({ basis }: DeviceRow): 'watch' | 'avoid' {
   return basis === 'standard' || basis === 'derived' ? 'avoid' : 'watch';

@@ -5,6 +5,7 @@ import type { NetworkModel } from '../network/network-model.js';
 import type { Control } from '../operation/control.js';
 import { bankDevices } from './bank-devices.js';
 import { type CabinetHeat, cabinetHeat } from './cabinet-heat.js';
+import { controllerDevices } from './controller-devices.js';
 import type { DeviceRow } from './device-row.js';
 import { type FaultCurrent, faultCurrent } from './fault-current.js';
 import type { JudgeBasis, Judgement } from './judge-bank.js';
@@ -27,7 +28,7 @@ export interface Devices {
  * @param levels its levels
  * @param basis what it is judged by, its judgement, settings, conductor current [A] and the site's facts
  * @returns rows and the numbers behind them
- * @source method-limits, practice, iec-60909-0
+ * @source method-devices, practice, iec-60909-0
  */
 export function devices(
   model: NetworkModel,
@@ -56,11 +57,10 @@ export function devices(
       ...bankDevices(bank, {
         ...shared,
         conductorMinA,
-        control,
         fault,
         heat,
-        generator: (model.nodal?.topology.generators.length ?? 0) > 0,
       }),
+      ...controllerDevices(bank, { ...shared, control, generator: (model.nodal?.topology.generators.length ?? 0) > 0 }),
     ],
     fault,
     heat,

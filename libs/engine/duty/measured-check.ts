@@ -44,7 +44,7 @@ const LEAST_READ = { voltagePct: 0.1, currentSharePct: 1 } as const;
  * @param levels its levels
  * @param measured what was read
  * @returns one row an order, voltages first
- * @source method-limits
+ * @source method-measured
  */
 export function measuredCheck(
   model: NetworkModel,

@@ -1,6 +1,6 @@
 import type { Flow } from '../network/flow.js';
 import type { NetworkModel } from '../network/network-model.js';
-import { type CurrentLimits, currentLimits } from './current-limits.js';
+import { type CurrentLimits, chosenCurrentLimits } from './current-limits.js';
 import { type Duty, DutyRow, NEAR_RATIO, type Place, ratioVerdict } from './duty-row.js';
 import { type LimitChoice, limitChoice } from './limit-editions.js';
 import type { RuleSet, Verdict } from './rules.js';
@@ -44,7 +44,7 @@ export function networkLimits(basis: {
   const choice = basis.limits ?? limitChoice(basis.rules, undefined);
   return {
     voltage: voltageLimits(basis.rules, basis.nominalV, basis.emcClass, choice),
-    current: basis.loadA > 0 ? currentLimits(shortCircuitA / basis.loadA, choice) : null,
+    current: basis.loadA > 0 ? chosenCurrentLimits(shortCircuitA / basis.loadA, choice) : null,
   };
 }
 

@@ -30,7 +30,7 @@ export interface BankDemand {
  * @param levels its levels
  * @param site voltages [V] and least fault level [MVA]
  * @returns one entry a group, and the reactors' loss
- * @source method-limits
+ * @source method-devices
  */
 export function bankDemand(
   model: NetworkModel,

@@ -37,7 +37,7 @@ export interface StageDeviceBasis {
  * @param bank the bank
  * @param basis rules, voltages, currents met, and what the site has
  * @returns rows, group after group
- * @source method-limits, practice
+ * @source method-devices, practice
  */
 export function stageDevices(bank: Bank, basis: StageDeviceBasis): DeviceRow[] {
   return bank.groups.flatMap((_, g) => [

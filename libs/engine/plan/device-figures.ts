@@ -1,13 +1,14 @@
-import { bankCurrentA, INSTANTANEOUS_RATIO, responseA, smallestKvar } from '../duty/bank-devices.js';
+import { bankCurrentA, INSTANTANEOUS_RATIO } from '../duty/bank-devices.js';
 import { AIR, CAPACITOR_LOSS_W_PER_KVAR, type CabinetHeat } from '../duty/cabinet-heat.js';
+import { responseA, smallestKvar } from '../duty/controller-devices.js';
 import type { Devices } from '../duty/devices.js';
 import { FAULT_CURRENT_EDITION, type FaultCurrent } from '../duty/fault-current.js';
 import { CAPACITOR_RULES } from '../duty/rules.js';
 import { LINEAR_RATIO, stageA, stageReactanceOhm, voltageChangePct } from '../duty/stage-devices.js';
 import type { Bank } from '../layout/bank.js';
 import { effectiveKvar, stageOhm } from '../layout/stage.js';
-import type { Control } from '../operation/control.js';
 import { summarizeNetwork } from '../network/network-check.js';
+import type { Control } from '../operation/control.js';
 import { type Figure, figure } from './figure.js';
 import type { Study } from './study.js';
 

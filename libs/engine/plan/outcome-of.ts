@@ -1,6 +1,7 @@
 import { ageing } from '../duty/ageing.js';
 import { devices } from '../duty/devices.js';
 import { type JudgeBasis, type Judgement, judgeBank } from '../duty/judge-bank.js';
+import { limitsPoint } from '../duty/limits-point.js';
 import { marginMap } from '../duty/margin-map.js';
 import { type MeasuredCheck, measuredCheck } from '../duty/measured-check.js';
 import { CAPACITOR_RULES, graver, type Verdict } from '../duty/rules.js';
@@ -13,10 +14,9 @@ import type { Remark } from '../problem.js';
 import { cautions } from './cautions.js';
 import { deviceFigures } from './device-figures.js';
 import { figures } from './figures.js';
-import { limitsPoint, pointAssumption } from './limits-point.js';
 import type { Outcome, Rival } from './outcome.js';
 import { reasons } from './reasons.js';
-import { type Beside, reasonsBeside, verdictBeside } from './reasons-beside.js';
+import { type Beside, pointAssumption, reasonsBeside, verdictBeside } from './reasons-beside.js';
 import type { Result } from './result.js';
 import { type Operated, operate, type Study } from './study.js';
 
@@ -57,7 +57,7 @@ export function outcomeOf(
       ? null
       : devices(study.model, bank, levels, { judge: basis, judgement, control, conductorMinA, facts });
   const beside: Beside = {
-    limits: limitsPoint(study),
+    limits: limitsPoint(study.model, study.site),
     devices: equipment?.rows ?? [],
     ageing: ageing(study.model, bank, basis, facts.bank),
     measured: facts.measured === null ? null : measuredOf(study, kind, bank, facts.measured),

@@ -1,11 +1,11 @@
 import type { Ageing } from '../duty/ageing.js';
 import { type DeviceRow, shortDevices, shortVerdict } from '../duty/device-row.js';
+import type { LimitsPoint } from '../duty/limits-point.js';
 import type { MeasuredCheck } from '../duty/measured-check.js';
 import { graver, type Verdict } from '../duty/rules.js';
 import type { Bank } from '../layout/bank.js';
 import type { Control } from '../operation/control.js';
 import { type Remark, remark } from '../problem.js';
-import type { LimitsPoint } from './limits-point.js';
 import type { Study } from './study.js';
 
 /** What is judged beside the network and the duties. */
@@ -21,7 +21,7 @@ export interface Beside {
  * second look; so does a reading above every corner of the model.
  * @param beside devices, ageing, measurement
  * @returns `clear` where nothing speaks against it; ageing never counts
- * @source method-limits
+ * @source method-devices, method-measured, method-ageing
  */
 export function verdictBeside({ devices, measured }: Beside): Verdict {
   const short = shortDevices(devices).reduce<Verdict>((worst, row) => graver(worst, shortVerdict(row)), 'clear');
@@ -36,7 +36,7 @@ export function verdictBeside({ devices, measured }: Beside): Verdict {
  * @param control settings
  * @param beside devices, ageing, measurement
  * @returns reasons, without words
- * @source method-limits
+ * @source method-devices, method-measured, method-ageing
  */
 export function reasonsBeside(study: Study, bank: Bank, control: Control, beside: Beside): Remark[] {
   return [
@@ -55,8 +55,12 @@ function deviceReason(row: DeviceRow): Remark {
   const passed =
     typeof row.fitted === 'number' && typeof most === 'number' && row.fitted > most ? most : (least ?? most);
   if (passed !== null) values.limit = passed;
-  const code = shortVerdict(row) === 'avoid' ? 'device.short' : 'device.shortByPractice';
-  return remark(code, values, { unit: row.unit, source: row.source });
+  return remark(shortCode(row), values, { unit: row.unit, source: row.source });
+}
+
+function shortCode(row: DeviceRow): string {
+  if (row.basis === 'site') return 'device.noResponse';
+  return shortVerdict(row) === 'avoid' ? 'device.short' : 'device.shortByPractice';
 }
 
 function measuredReasons(measured: MeasuredCheck | null, bankKvar: number): Remark[] {
@@ -73,7 +77,24 @@ function measuredReasons(measured: MeasuredCheck | null, bankKvar: number): Rema
   );
 }
 
-function ageingReasons({ cases }: Ageing): Remark[] {
+function ageingReasons({ cases, stages }: Ageing): Remark[] {
+  // What was measured, against the capacitance at which that stage must come out.
+  const due = cases.flatMap(({ group, from, capacitanceUf }) => {
+    const comesOutUf = group === null ? null : stages[group]!.comesOutUf;
+    if (from !== 'measured' || group === null || capacitanceUf === null || comesOutUf === null) return [];
+    if (capacitanceUf >= comesOutUf) return [];
+    return [
+      remark(
+        'ageing.takeOut',
+        { group: group + 1, capacitanceUf, comesOutUf },
+        { path: `bank.stages[${group}].measuredUf` },
+      ),
+    ];
+  });
+  return [...due, ...limitReasons(cases)];
+}
+
+function limitReasons(cases: Ageing['cases']): Remark[] {
   return cases
     .filter(({ verdict }) => verdict === 'avoid')
     .map(({ group, capacitanceFactor, tunedOrderH }) => {
@@ -100,4 +121,16 @@ function loadReasons(study: Study, control: Control): Remark[] {
 function pointReasons({ voltage, points, couplingPoint, atCouplingPoint }: LimitsPoint): Remark[] {
   if (atCouplingPoint) return [];
   return [remark('limits.notCouplingPoint', { edition: voltage, point: points.join(', '), couplingPoint })];
+}
+
+/**
+ * Where a transformer lies between the bus and the network, that the bus is the point of coupling is an assumption.
+ * @param study site and record
+ * @param limits the point judged
+ * @returns one line or none
+ */
+export function pointAssumption(study: Study, limits: LimitsPoint): Remark[] {
+  const { site } = study;
+  if (site.topology !== null || site.supply.transformers.length === 0 || !limits.atCouplingPoint) return [];
+  return [remark('default.limits.point', { point: limits.couplingPoint }, { path: 'meteredAt' })];
 }

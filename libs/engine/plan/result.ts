@@ -3,6 +3,7 @@ import type { ChargeStage } from '../duty/charge.js';
 import type { DeviceRow } from '../duty/device-row.js';
 import type { Duty } from '../duty/duty-row.js';
 import type { InrushStage } from '../duty/inrush.js';
+import type { LimitsPoint } from '../duty/limits-point.js';
 import type { MeasuredCheck } from '../duty/measured-check.js';
 import type { Verdict } from '../duty/rules.js';
 import type { BankSummary } from '../layout/levels.js';
@@ -13,7 +14,6 @@ import type { Remark } from '../problem.js';
 import type { RecordSummary } from '../record/record-summary.js';
 import type { RequirementSummary } from '../requirement/requirement.js';
 import type { Figure } from './figure.js';
-import type { LimitsPoint } from './limits-point.js';
 
 /** The answer of `plan` and `assess`. */
 export interface Result {

@@ -1,7 +1,8 @@
-import { networkLimits } from '../duty/network-duties.js';
 import { summarizeNetwork } from '../network/network-check.js';
-import { type Remark, remark } from '../problem.js';
-import type { Study } from './study.js';
+import type { NetworkModel } from '../network/network-model.js';
+import type { LimitChoice } from './limit-editions.js';
+import { networkLimits } from './network-duties.js';
+import type { RuleSet } from './rules.js';
 
 /** The limits a bank was judged by, and where. */
 export interface LimitsPoint {
@@ -17,18 +18,27 @@ export interface LimitsPoint {
   atCouplingPoint: boolean;
 }
 
+/** What decides which limits apply, and where. */
+export interface LimitedSite {
+  rules: RuleSet;
+  nominalV: number;
+  emcClass: 1 | 2 | 3;
+  limits: LimitChoice;
+  meteredAt: 'bus' | 'primary';
+}
+
 /**
- * The edition and the point of a study's limits. In a network every bus is judged; the point of coupling is the one the
+ * The edition and the point of a site's limits. In a network every bus is judged; the point of coupling is the one the
  * network part names, else where the site is metered.
- * @param study site and record
+ * @param model the network without the bank
+ * @param site rules, edition, voltage and where it is metered
  * @returns editions and points
  * @source method-limits
  */
-export function limitsPoint(study: Study): LimitsPoint {
-  const { site, model } = study;
+export function limitsPoint(model: NetworkModel, site: LimitedSite): LimitsPoint {
   const ends = summarizeNetwork(model, []);
   const limits = networkLimits({ ...site, shortCircuitMinMva: ends.shortCircuitMinMva, loadA: model.loadA });
-  const { topology } = site;
+  const topology = model.nodal?.topology;
   const metered = site.meteredAt === 'primary' ? 'primary' : model.buses[model.bankBus]!;
   const point = topology?.couplingPoint;
   const couplingPoint = point === undefined ? metered : point === 'primary' ? point : topology!.buses[point]!;
@@ -39,16 +49,4 @@ export function limitsPoint(study: Study): LimitsPoint {
     couplingPoint,
     atCouplingPoint: model.buses.includes(couplingPoint),
   };
-}
-
-/**
- * Where a transformer lies between the bus and the network, that the bus is the point of coupling is an assumption.
- * @param study site and record
- * @param limits the point judged
- * @returns one line or none
- */
-export function pointAssumption(study: Study, limits: LimitsPoint): Remark[] {
-  const { site } = study;
-  if (site.topology !== null || site.supply.transformers.length === 0 || !limits.atCouplingPoint) return [];
-  return [remark('default.limits.point', { point: limits.couplingPoint }, { path: 'meteredAt' })];
 }
