@@ -22,9 +22,13 @@ export function drawDevices(paper: Paper, outcome: Outcome): void {
   const { result } = outcome;
   const open = openDevices(result.devices);
   const left = open === 0 ? 'every one is entered' : `${countWord(open)} of ${result.devices.length} not entered`;
-  paper.heading('7.2', `Devices: conductors for ${formatQuantity(result.conductorMinA, 'A')} or more; ${left}`, {
-    level: 3,
-  });
+  paper.heading(
+    '7.2',
+    `Devices: conductors and disconnector for ${formatQuantity(result.conductorMinA, 'A')} or more; ${left}`,
+    {
+      level: 3,
+    },
+  );
   const rows = deviceTable(outcome).map(({ device, met, need, fitted, state, basis }): Cell[] => [
     device,
     met,
