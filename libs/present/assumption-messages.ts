@@ -107,6 +107,10 @@ export const ASSUMPTION_MESSAGES: Messages = {
     'The voltage at the bus is held against the limits, and the bus is taken for the point of coupling.',
     'Ask who owns the point of coupling, and where it lies.',
   ),
+  'limits.tighterCopy': assumed(
+    'Copies of {edition} differ at order {orderH}, {usedPct} and {otherPct}: the tighter is used.',
+    'Read the standard itself.',
+  ),
   'bank.ignored': assumed(
     'The site’s own bank lends nothing to this plan.',
     'Judge it for itself, or say what was connected while the record was taken.',

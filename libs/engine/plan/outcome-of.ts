@@ -16,7 +16,7 @@ import { deviceFigures } from './device-figures.js';
 import { figures } from './figures.js';
 import type { Outcome, Rival } from './outcome.js';
 import { reasons } from './reasons.js';
-import { type Beside, pointAssumption, reasonsBeside, verdictBeside } from './reasons-beside.js';
+import { type Beside, copyNote, pointAssumption, reasonsBeside, verdictBeside } from './reasons-beside.js';
 import type { Result } from './result.js';
 import { type Operated, operate, type Study } from './study.js';
 
@@ -85,7 +85,12 @@ export function outcomeOf(
       ...reasons(study, bank, operated, judgement),
       ...reasonsBeside(study, bank, control, beside),
     ],
-    assumptions: [...study.assumptions, ...pointAssumption(study, beside.limits), ...said.assumptions],
+    assumptions: [
+      ...study.assumptions,
+      ...pointAssumption(study, beside.limits),
+      ...copyNote(study),
+      ...said.assumptions,
+    ],
     cautions: cautions(judgement),
     figures: [],
   };

@@ -134,3 +134,25 @@ export function pointAssumption(study: Study, limits: LimitsPoint): Remark[] {
   if (site.topology !== null || site.supply.transformers.length === 0 || !limits.atCouplingPoint) return [];
   return [remark('default.limits.point', { point: limits.couplingPoint }, { path: 'meteredAt' })];
 }
+
+/**
+ * Where copies of a standard disagree the tighter one is used, and said so where an order present meets it.
+ * @param study site and record
+ * @returns one line or none
+ */
+export function copyNote(study: Study): Remark[] {
+  const { limits, emcClass } = study.site;
+  const met = study.model.excitation.ordersH.includes(DISPUTED.orderH);
+  if (limits.edition !== DISPUTED.edition || emcClass !== DISPUTED.emcClass || !met) return [];
+  const { edition, orderH, usedPct, otherPct } = DISPUTED;
+  return [remark('limits.tighterCopy', { edition, orderH, usedPct, otherPct }, { path: 'limits.edition' })];
+}
+
+/** The one row of which copies were seen to differ. */
+const DISPUTED = {
+  edition: 'IEC 61000-2-4:2002',
+  emcClass: 2,
+  orderH: 21,
+  usedPct: 0.2,
+  otherPct: 0.3,
+} as const;
