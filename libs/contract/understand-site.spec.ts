@@ -99,7 +99,7 @@ const read: [what: string, json: unknown, value: (site: Site) => unknown, expect
 ];
 
 describe('a quantity in another form', () => {
-  it.each(read)('%s is read, and echoed as understood', (_what, json, value, expected, path) => {
+  it.each(read)('%s is read, and echoed as understood', (...[, json, value, expected, path]) => {
     const site = readSite(json);
     expect(Number(value(site)) / expected).toBeCloseTo(1, 4);
     expect(site.understood).toEqual([expect.objectContaining({ path, value: value(site) })]);

@@ -1,5 +1,5 @@
 import { ageing } from '../duty/ageing.js';
-import { devices } from '../duty/devices.js';
+import { type Devices, devices } from '../duty/devices.js';
 import { type JudgeBasis, type Judgement, judgeBank } from '../duty/judge-bank.js';
 import { limitsPoint } from '../duty/limits-point.js';
 import { marginMap } from '../duty/margin-map.js';
@@ -50,18 +50,7 @@ export function outcomeOf(
   const conductorMinA =
     (CAPACITOR_RULES[study.site.rules].conductorRatio * bankSummary.effectiveKvar * 1000) /
     (Math.sqrt(3) * study.site.nominalV);
-  const basis = basisOf(study, control);
-  const facts = { ...study.site.facts, bank: kind === 'plan' ? null : study.site.facts.bank };
-  const equipment =
-    bank.groups.length === 0
-      ? null
-      : devices(study.model, bank, levels, { judge: basis, judgement, control, conductorMinA, facts });
-  const beside: Beside = {
-    limits: limitsPoint(study.model, study.site),
-    devices: equipment?.rows ?? [],
-    ageing: ageing(study.model, bank, basis, facts.bank),
-    measured: facts.measured === null ? null : measuredOf(study, kind, bank, facts.measured),
-  };
+  const { beside, equipment } = besideOf(kind, study, { bank, control, judgement, conductorMinA });
   const result: Result = {
     record: study.recordSummary,
     requirement: study.requirement,
@@ -69,14 +58,11 @@ export function outcomeOf(
     control,
     operation: summarizeOperation(operated, study.months, study.target, levels),
     network: judgement.network,
-    limits: beside.limits,
     duties: judgement.duties,
-    devices: beside.devices,
     charge: { stages: judgement.charge },
     inrush: { stages: judgement.inrush },
     conductorMinA,
-    ageing: beside.ageing,
-    measured: beside.measured,
+    ...beside,
     robustness: null,
     money: null,
     verdict: graver(overallVerdict(study, judgement), verdictBeside(beside)),
@@ -152,6 +138,28 @@ export function judge(study: Study, bank: Bank, control: Control): Judgement {
  */
 export function overallVerdict(study: Study, judgement: Judgement): Verdict {
   return study.site.recordedBank.state === 'unknown' ? graver(judgement.verdict, 'watch') : judgement.verdict;
+}
+
+// A plan does without what the site's own bank has: it says nothing of the one that is proposed.
+function besideOf(
+  kind: Outcome['kind'],
+  study: Study,
+  choice: { bank: Bank; control: Control; judgement: Judgement; conductorMinA: number },
+): { beside: Beside; equipment: Devices | null } {
+  const { bank, control, judgement, conductorMinA } = choice;
+  const { model, site } = study;
+  const judge = basisOf(study, control);
+  const facts = { ...site.facts, bank: kind === 'plan' ? null : site.facts.bank };
+  const levels = bankLevels(bank, site.nominalV);
+  const equipment =
+    bank.groups.length === 0 ? null : devices(model, bank, levels, { judge, judgement, control, conductorMinA, facts });
+  const beside = {
+    limits: limitsPoint(model, site),
+    devices: equipment?.rows ?? [],
+    ageing: ageing(model, bank, judge, facts.bank),
+    measured: facts.measured === null ? null : measuredOf(study, kind, bank, facts.measured),
+  };
+  return { beside, equipment };
 }
 
 // With a bank in, a measurement says something of the bank that was in: the site's own, not the one that is proposed.
