@@ -118,6 +118,12 @@ export const REASON_MESSAGES: Messages = {
     subject: '{device}[ of group {group}] falls short of common practice',
     consequence: 'Fit what the table of devices asks for, or accept it with a reason.',
   },
+  'device.riseOverLimit': {
+    level: 'to be accepted',
+    text: 'If the bank’s own voltage rise is not in the highest bus voltage, the capacitors of group {group} are rated too low: {value} against {limit}.',
+    subject: 'Rated voltage of group {group}, if the bank’s own rise is not in the highest bus voltage',
+    consequence: 'Say what the highest voltage includes, or take the next rated voltage.',
+  },
   'device.noResponse': {
     level: 'to be accepted',
     text: '{device}: the controller answers to {value}, and the smallest stage gives {limit} at its threshold.',

@@ -1,31 +1,12 @@
-// Devices, limits by edition, measurement and ageing on whole assessments of invented sites.
+// Devices and limits by edition on whole assessments of invented sites.
 import { describe, expect, it } from 'vitest';
-import { assessBank, type BankInput, planBank, type Result, type Site, UTC_TABLE } from '#libs/engine/index.js';
-import { chance } from '../support/chance.js';
-import { driftingLoad, madeRecord } from '../support/made-record.js';
+import { type BankInput, planBank, type Result, UTC_TABLE } from '#libs/engine/index.js';
+import { assessedSite, BANK, LOADS, RECORD, reasonCodes } from '../support/assessed-site.js';
 import { madeSite } from '../support/made-site.js';
-import { runs, SEED } from '../support/soak.js';
 
-const record = madeRecord(driftingLoad(chance(SEED), 96, 300, 0.9));
-const bank: BankInput = {
-  stages: [
-    { count: 2, ratedKvar: 25, ratedV: 480, reactorPct: 7 },
-    { count: 3, ratedKvar: 50, ratedV: 480, reactorPct: 7 },
-  ],
-};
-const loads: Site['loads'] = {
-  distorting: [{ name: 'drives', fundamentalA: 250, spectrum: 'six-pulse-choke' }],
-  backgroundPct: [{ orderH: 5, pct: 1 }],
-};
-
-function assessed(parts: Partial<Site> = {}): Result {
-  return assessBank(madeSite({ bank, loads, ...parts }), record, UTC_TABLE).result;
-}
-
-const plain = assessed();
+const plain = assessedSite();
 const stateOf = (result: Result, device: string, group: number | null = null) =>
   result.devices.find((row) => row.device === device && row.group === group)?.state;
-const codes = (result: Result) => result.reasons.map(({ code }) => code);
 
 describe('the table of devices', () => {
   it('leaves verdict, duties and network as they are where nothing is entered', () => {
@@ -76,10 +57,10 @@ describe('the table of devices', () => {
     ['no over-pressure disconnection', { protection: { overPressure: false } }, 'protection.overPressure', 'watch'],
     ['an earthed star, which triplens flow through', { connection: 'earthedStar' }, 'capacitor.connection', 'watch'],
   ])('holds %s against the bank', (_what, parts, device, verdict) => {
-    const result = assessed({ bank: { ...bank, ...parts } });
+    const result = assessedSite({ bank: { ...BANK, ...parts } });
     expect(stateOf(result, device)).toBe('short');
     expect(result.verdict).toBe(verdict);
-    expect(codes(result)).toContain(verdict === 'avoid' ? 'device.short' : 'device.shortByPractice');
+    expect(reasonCodes(result)).toContain(verdict === 'avoid' ? 'device.short' : 'device.shortByPractice');
   });
 
   it('would pass the breaker by the fault level of resonance, and the conductor by the bare current (control)', () => {
@@ -87,14 +68,14 @@ describe('the table of devices', () => {
     const resonanceKa = plain.network.shortCircuitMva / (Math.sqrt(3) * 0.4);
     expect(resonanceKa).toBeLessThan(Number(row('mainDevice.breaking').least));
     const between = { breakingKa: (resonanceKa + Number(row('mainDevice.breaking').least)) / 2 };
-    expect(assessed({ bank: { ...bank, mainDevice: between } }).verdict).toBe('avoid');
+    expect(assessedSite({ bank: { ...BANK, mainDevice: between } }).verdict).toBe('avoid');
     expect(Number(row('conductor.rating').value)).toBeLessThan(250);
   });
 
   it('passes ratings that are enough', () => {
-    const enough = assessed({
+    const enough = assessedSite({
       bank: {
-        ...bank,
+        ...BANK,
         conductorA: 500,
         mainDevice: { ratedA: 500, settingA: 450, instantaneousA: 4000, breakingKa: 50, withstandKa: 105 },
         protection: { earthFault: true, overTemperature: true, overPressure: true, undervoltage: true },
@@ -112,7 +93,7 @@ describe('the table of devices', () => {
     [{ ambientMaxC: 40, ambientYearC: 21 }, 'A', 'short'],
     [{ ambientMaxC: 56 }, 'D', 'short'],
   ] as const)('holds the place %j against category %s: %s', (place, ambientCategory, state) => {
-    const result = assessed({ place, bank: { ...bank, ambientCategory } });
+    const result = assessedSite({ place, bank: { ...BANK, ambientCategory } });
     expect(stateOf(result, 'capacitor.ambient')).toBe(state);
   });
 
@@ -124,19 +105,31 @@ describe('the table of devices', () => {
     [{ indoors: false }, 'open'],
     [{ enclosureIp: 'IP54' }, 'open'],
   ] as const)('holds the enclosure %j: %s', (place, state) => {
-    expect(stateOf(assessed({ place }), 'cabinet.enclosure')).toBe(state);
+    expect(stateOf(assessedSite({ place }), 'cabinet.enclosure')).toBe(state);
+  });
+
+  it('tells of a rated voltage that the level’s own rise passes, and leaves the verdict to the duties', () => {
+    // 420 V on the bus are 1.1 times 382 V: the duty is met to a hair, a plain stage adds 0.4 % a hundred kvar
+    const tight = { stages: [{ count: 3, ratedKvar: 50, ratedV: 382 }] };
+    const quiet = { distorting: [], backgroundPct: [] };
+    const result = assessedSite({ bank: tight, loads: quiet });
+    const duty = result.duties.find(({ name }) => name === 'capacitor voltage, highest')!;
+    expect(duty.ratio!).toBeLessThan(1);
+    expect(stateOf(result, 'capacitor.voltage', 0)).toBe('short');
+    expect(reasonCodes(result)).toContain('device.riseOverLimit');
+    expect(reasonCodes(plain)).not.toContain('device.riseOverLimit');
   });
 
   it('says whether a stage blocks the ripple signal', () => {
-    const at = (rippleHz: number) => assessed({ supply: { ...madeSite().supply, rippleHz } });
+    const at = (rippleHz: number) => assessedSite({ supply: { ...madeSite().supply, rippleHz } });
     expect(stateOf(at(216.7), 'stage.ripple', 1)).toBe('fits'); // 189 Hz is under 0.9 · 216.7 = 195 Hz
     expect(stateOf(at(175), 'stage.ripple', 1)).toBe('noted'); // tuned above it: a capacitor for the signal
     expect(at(175).verdict).toBe(plain.verdict);
   });
 
   it('of a plan asks for everything: what the site’s own bank has says nothing of another', () => {
-    const site = madeSite({ loads, bank: { ...bank, conductorA: 1, mainDevice: { breakingKa: 1 } } });
-    const { result } = planBank(site, record, UTC_TABLE);
+    const site = madeSite({ loads: LOADS, bank: { ...BANK, conductorA: 1, mainDevice: { breakingKa: 1 } } });
+    const { result } = planBank(site, RECORD, UTC_TABLE);
     expect(result.devices.filter(({ device }) => device.startsWith('mainDevice')).map(({ state }) => state)).toEqual(
       Array.from({ length: 4 }, () => 'open'),
     );
@@ -145,7 +138,7 @@ describe('the table of devices', () => {
 
 describe('limits by edition', () => {
   it('are named with every figure they were held against', () => {
-    const result = assessed({ limits: { edition: 'EN 50160:2010', own: { name: 'agreement', distortionPct: 1 } } });
+    const result = assessedSite({ limits: { edition: 'EN 50160:2010', own: { name: 'agreement', distortionPct: 1 } } });
     expect(result.limits).toMatchObject({
       voltage: 'EN 50160:2010 and agreement',
       points: ['main'],
@@ -157,140 +150,23 @@ describe('limits by edition', () => {
   });
 
   it('judge what has a row: an own table without a total leaves the total unjudged', () => {
-    const result = assessed({ limits: { edition: 'own', own: { voltage: [{ orderH: 7, pct: 5 }] } } });
+    const result = assessedSite({ limits: { edition: 'own', own: { voltage: [{ orderH: 7, pct: 5 }] } } });
     const rows = Object.fromEntries(result.duties.map((duty) => [duty.name, duty]));
     expect(rows['voltage distortion']).toMatchObject({ limit: null, ratio: null, verdict: null });
     expect(rows['harmonic voltage']).toMatchObject({ orderH: 7, limit: 5 });
   });
 
   it('say it where the point judged is not the point of coupling', () => {
-    const result = assessed({ meteredAt: 'primary' });
+    const result = assessedSite({ meteredAt: 'primary' });
     expect(result.limits).toMatchObject({ couplingPoint: 'primary', atCouplingPoint: false });
-    expect(codes(result)).toContain('limits.notCouplingPoint');
-    expect(codes(plain)).not.toContain('limits.notCouplingPoint');
+    expect(reasonCodes(result)).toContain('limits.notCouplingPoint');
+    expect(reasonCodes(plain)).not.toContain('limits.notCouplingPoint');
   });
 
   it('with a current row of the site’s own hold the supply’s current under iec rules too', () => {
-    const result = assessed({ limits: { own: { current: [{ orderH: 5, pct: 1 }] } } });
+    const result = assessedSite({ limits: { own: { current: [{ orderH: 5, pct: 1 }] } } });
     const row = result.duties.find(({ name }) => name === 'harmonic current')!;
     expect(row).toMatchObject({ orderH: 5, limit: 1 });
     expect(row.ratio!).toBeGreaterThan(1);
-  });
-});
-
-describe('a measurement', () => {
-  const level = plain.network.levels.find(({ levelKvar, case: name }) => levelKvar === 0 && name === 'nominal')!;
-  const read = (factor: number, extra: { orderH: number; pct: number }[] = []) => ({
-    bankKvar: 0,
-    voltagePct: [...level.orders.map(({ orderH, voltagePct }) => ({ orderH, pct: factor * voltagePct })), ...extra],
-    currentA: level.orders.map(({ orderH, sourceA }) => ({ orderH, a: factor * sourceA })),
-  });
-  const measured = (given: ReturnType<typeof read>) => assessed({ loads: { ...loads, measured: given } });
-
-  it('of what the model computes agrees with it in every row', () => {
-    const { measured: check, verdict } = measured(read(1));
-    expect(check!.rows).toHaveLength(2 * level.orders.length);
-    for (const row of check!.rows) {
-      expect(row.standing).toBe('within');
-      expect(Math.abs(row.differencePct!)).toBeLessThan(1e-9);
-    }
-    expect(verdict).toBe('clear');
-  });
-
-  it('above every corner is a finding, and the verdict never better than near a limit', () => {
-    const result = measured(read(3));
-    expect(result.measured!.rows.some(({ standing }) => standing === 'above')).toBe(true);
-    expect(codes(result)).toContain('measured.above');
-    expect(result.verdict).toBe('watch');
-  });
-
-  it('of an order the model has nothing at is above it', () => {
-    const result = measured(read(1, [{ orderH: 3, pct: 2 }]));
-    expect(result.measured!.rows.find(({ orderH }) => orderH === 3)).toMatchObject({ computed: 0, standing: 'above' });
-  });
-
-  it('is never summed with the sources: whatever it reads, network and duties stay to the bit', () => {
-    const random = chance(SEED);
-    for (let k = 0; k < runs(4, 40); k++) {
-      const result = measured(
-        read(
-          random.between(0, 20),
-          [{ orderH: random.whole(2, 49), pct: random.between(0, 9) }].filter(
-            ({ orderH }) => !level.orders.some((order) => order.orderH === orderH),
-          ),
-        ),
-      );
-      expect(result.network).toEqual(plain.network);
-      expect(result.duties).toEqual(plain.duties);
-    }
-  });
-
-  it('would show in the network if it were summed (control)', () => {
-    const more = [...loads!.distorting!, { name: 'as read', fundamentalA: 100, orders: [{ orderH: 5, pct: 20 }] }];
-    expect(assessed({ loads: { ...loads, distorting: more } }).network).not.toEqual(plain.network);
-  });
-
-  it('with a bank in is compared at that level, and at no other', () => {
-    const kvar = plain.bank.levelsKvar[2]!;
-    const at = (bankKvar: number) => assessed({ loads: { ...loads, measured: { ...read(1), bankKvar } } });
-    expect(at(kvar + 0.3).measured!.levelKvar).toBe(kvar);
-    expect(at(kvar + 5).measured).toMatchObject({ levelKvar: null, rows: [] });
-    expect(codes(at(kvar + 5))).toContain('measured.noLevel');
-  });
-});
-
-describe('ageing', () => {
-  it('moves ratio and tuned order with the capacitance: 7 % at 80 % left is order 4.23', () => {
-    const { cases } = assessed({ bank: { ...bank, installed: true } }).ageing;
-    expect(cases.map(({ group }) => group)).toEqual([null, 0, 1]);
-    for (const aged of cases) {
-      expect(aged.capacitanceFactor).toBe(0.8);
-      expect(aged.reactorPct).toBeCloseTo(5.6, 9);
-      expect(aged.tunedOrderH).toBeCloseTo(4.226, 3);
-    }
-  });
-
-  it('takes 90 % for a new bank, and what was measured where it was', () => {
-    expect(plain.ageing.cases.map(({ capacitanceFactor, from }) => [capacitanceFactor, from])).toEqual(
-      Array.from({ length: 3 }, () => [0.9, 'new']),
-    );
-    const [first, second] = bank.stages as [BankInput['stages'][0], BankInput['stages'][0]];
-    const nameplateUf = plain.charge.stages[1]!.capacitanceUf;
-    const stages = [first, { ...second, measuredUf: 0.7 * nameplateUf }];
-    const aged = assessed({ bank: { stages } }).ageing.cases[2]!;
-    expect(aged).toMatchObject({ from: 'measured', group: 1 });
-    expect(aged.capacitanceFactor).toBeCloseTo(0.7, 12);
-  });
-
-  it('leaves the verdict alone: it stands beside the corners, not among them', () => {
-    const { installed, ...result } = { installed: assessed({ bank: { ...bank, installed: true } }), ...plain };
-    expect(installed.verdict).toBe(result.verdict);
-    expect(installed.duties).toEqual(result.duties);
-  });
-
-  // Second method: the aged bank written out as a site of its own and assessed whole.
-  it('finds the capacitance at which a stage must come out: worse just below it, as it was just above', () => {
-    const { stages } = plain.ageing;
-    const verdictAt = (pct: number): string => {
-      const [first, second] = bank.stages as [BankInput['stages'][0], BankInput['stages'][0]];
-      const left = { ...second, count: 1, ratedKvar: (second.ratedKvar * pct) / 100, reactorPct: (7 * pct) / 100 };
-      const { duties } = assessed({ bank: { stages: [first, { ...second, count: 2 }, left], interStageUh: 2 } });
-      return duties.some(({ verdict }) => verdict === 'avoid' || verdict === 'watch') ? 'worse' : 'clear';
-    };
-    const { comesOutPct, comesOutUf } = stages[1]!;
-    expect(comesOutPct).not.toBeNull();
-    expect(verdictAt(comesOutPct! + 0.05)).toBe('clear');
-    expect(verdictAt(comesOutPct! - 0.05)).toBe('worse');
-    expect(comesOutUf! / plain.charge.stages[1]!.capacitanceUf).toBeCloseTo(comesOutPct! / 100, 12);
-  });
-
-  it('tells of a stage that was measured below that', () => {
-    const [first, second] = bank.stages as [BankInput['stages'][0], BankInput['stages'][0]];
-    const atPct = (pct: number) => {
-      const measuredUf = (plain.charge.stages[1]!.capacitanceUf * pct) / 100;
-      return codes(assessed({ bank: { stages: [first, { ...second, measuredUf }] } }));
-    };
-    expect(atPct(plain.ageing.stages[1]!.comesOutPct! - 1)).toContain('ageing.takeOut');
-    expect(atPct(plain.ageing.stages[1]!.comesOutPct! + 1)).not.toContain('ageing.takeOut');
   });
 });

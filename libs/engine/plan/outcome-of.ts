@@ -69,7 +69,7 @@ export function outcomeOf(
     reasons: [
       ...said.reasons,
       ...reasons(study, bank, operated, judgement),
-      ...reasonsBeside(study, bank, control, beside),
+      ...reasonsBeside(study, bank, { control, duties: judgement.duties }, beside),
     ],
     assumptions: [
       ...study.assumptions,

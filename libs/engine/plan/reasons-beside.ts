@@ -1,6 +1,7 @@
 import type { Ageing } from '../duty/ageing.js';
 import { type DeviceRow, shortDevices, shortVerdict } from '../duty/device-row.js';
 import type { LimitsPoint } from '../duty/limits-point.js';
+import type { Duty } from '../duty/duty-row.js';
 import type { MeasuredCheck } from '../duty/measured-check.js';
 import { graver, type Verdict } from '../duty/rules.js';
 import type { Bank } from '../layout/bank.js';
@@ -33,18 +34,42 @@ export function verdictBeside({ devices, measured }: Beside): Verdict {
  * What devices, measurement, ageing, fast loads and the point judged give to say.
  * @param study site and record
  * @param bank the bank
- * @param control settings
+ * @param made settings, and the duties that were judged already
  * @param beside devices, ageing, measurement
  * @returns reasons, without words
  * @source method-devices, method-measured, method-ageing
  */
-export function reasonsBeside(study: Study, bank: Bank, control: Control, beside: Beside): Remark[] {
+export function reasonsBeside(
+  study: Study,
+  bank: Bank,
+  made: { control: Control; duties: readonly Duty[] },
+  beside: Beside,
+): Remark[] {
+  const { control, duties } = made;
   return [
     ...shortDevices(beside.devices).map(deviceReason),
+    ...riseReasons(beside.devices, duties),
     ...measuredReasons(beside.measured, study.site.facts.measured?.bankKvar ?? 0),
     ...(bank.groups.length === 0 ? [] : [...ageingReasons(beside.ageing), ...loadReasons(study, control)]),
     ...pointReasons(beside.limits),
   ];
+}
+
+// Within its limit by the highest bus voltage that was entered, over it where the level's own rise is not in that voltage.
+function riseReasons(devices: readonly DeviceRow[], duties: readonly Duty[]): Remark[] {
+  const over = (group: number | null): boolean =>
+    duties.some(
+      (duty) => duty.group === group && duty.name === 'capacitor voltage, highest' && duty.verdict === 'avoid',
+    );
+  return devices
+    .filter(({ device, state, group }) => device === 'capacitor.voltage' && state === 'short' && !over(group))
+    .map(({ group, fitted, least, unit, source }) =>
+      remark(
+        'device.riseOverLimit',
+        { group: group! + 1, value: fitted!, limit: least! },
+        { unit, source, path: 'bus.highestV' },
+      ),
+    );
 }
 
 function deviceReason(row: DeviceRow): Remark {
