@@ -1,7 +1,7 @@
 // EN 50160:2010, 95 % values of the ten-minute means of a week, harmonic voltages up to the 25th in % of nominal and a
 // total distortion of 8 %: from memory, not seen. Copies give the 15th and the 21st as 0.5; orders above the 25th have no row.
 import { describe, expect, it } from 'vitest';
-import { limitChoice, voltageLimits } from '#libs/engine/index.js';
+import { chosenVoltageLimits, limitChoice } from '#libs/engine/index.js';
 
 const choice = limitChoice('iec', { edition: 'EN 50160:2010' });
 
@@ -33,7 +33,7 @@ const ROWS: [orderH: number, pct: number][] = [
 ];
 
 describe('EN 50160', () => {
-  const limits = voltageLimits('iec', 400, 2, choice);
+  const limits = chosenVoltageLimits(400, 2, choice);
 
   it.each(ROWS)('order %d: %d %%', (orderH, pct) => {
     expect(limits.orderPct(orderH)).toBe(pct);
@@ -50,7 +50,7 @@ describe('EN 50160', () => {
 
   it('knows no classes: the class of a plant moves none of its rows', () => {
     for (const [orderH] of ROWS) {
-      expect(voltageLimits('iec', 400, 3, choice).orderPct(orderH)).toBe(limits.orderPct(orderH));
+      expect(chosenVoltageLimits(400, 3, choice).orderPct(orderH)).toBe(limits.orderPct(orderH));
     }
   });
 });

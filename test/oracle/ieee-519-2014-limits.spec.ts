@@ -1,7 +1,7 @@
 // IEEE 519-2014: the tables of the 2022 edition (from memory), even orders held to 25 % of the odd band's limit (seen at
 // second hand).
 import { describe, expect, it } from 'vitest';
-import { currentLimits, limitChoice, voltageLimits } from '#libs/engine/index.js';
+import { chosenVoltageLimits, currentLimits, limitChoice } from '#libs/engine/index.js';
 
 const ROWS: [from: number, bandsPct: number[], totalPct: number][] = [
   [0, [4, 2, 1.5, 0.6, 0.3], 5],
@@ -47,7 +47,7 @@ describe('harmonic voltage by the 2014 edition', () => {
     [115_000, 1.5, 2.5],
     [230_000, 1, 1.5],
   ])('at %d V is that of 2022, under its own name', (nominalV, individualPct, totalPct) => {
-    const limits = voltageLimits('ieee', nominalV, 2, limitChoice('ieee', { edition: 'IEEE 519-2014' }));
+    const limits = chosenVoltageLimits(nominalV, 2, limitChoice('ieee', { edition: 'IEEE 519-2014' }));
     expect(limits.orderPct(5)).toBe(individualPct);
     expect(limits.distortionPct).toBe(totalPct);
     expect(limits.source).toBe('IEEE 519-2014');

@@ -1,16 +1,15 @@
 import { type LimitChoice, ownLimitsName, tighter } from './limit-editions.js';
 import { ownPct } from './voltage-limits.js';
 
-/** Current limits: bands by order and the total, % of I_L. */
-export interface CurrentLimits {
+/** Current limits: bands by order and the total, % of I_L; the user's own may leave some out. */
+export interface CurrentLimits<Limit extends number | null = number> {
   source: string;
-  /** null where there is none */
-  totalPct: number | null;
+  totalPct: Limit;
   /**
    * @param orderH order h
-   * @returns limit on I_h, % of I_L; null where there is none
+   * @returns limit on I_h, % of I_L
    */
-  orderPct(orderH: number): number | null;
+  orderPct(orderH: number): Limit;
 }
 
 /** First order above each band, as the table's columns are bounded. */
@@ -62,7 +61,10 @@ export function currentLimits(
  * @returns limits, % of I_L; null where nothing limits the current
  * @source ieee-519-2022, ieee-519-2014
  */
-export function chosenCurrentLimits(shortCircuitRatio: number, choice: LimitChoice): CurrentLimits | null {
+export function chosenCurrentLimits(
+  shortCircuitRatio: number,
+  choice: LimitChoice,
+): CurrentLimits<number | null> | null {
   const { edition, own } = choice;
   const isIeee = edition === 'IEEE 519-2022' || edition === 'IEEE 519-2014';
   const table = isIeee ? currentLimits(shortCircuitRatio, edition) : null;

@@ -2,7 +2,7 @@ import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { chosenCurrentLimits, currentLimits } from './current-limits.js';
 import { limitChoice, type OwnLimits, tighter } from './limit-editions.js';
-import { voltageLimits } from './voltage-limits.js';
+import { chosenVoltageLimits, voltageLimits } from './voltage-limits.js';
 
 const SEED = 20_260_131;
 const own: OwnLimits = {
@@ -20,7 +20,7 @@ describe('the limits of a site', () => {
   });
 
   it('of its own tighten an edition and never loosen it', () => {
-    const limits = voltageLimits('iec', 400, 2, limitChoice('iec', { own }));
+    const limits = chosenVoltageLimits(400, 2, limitChoice('iec', { own }));
     expect(limits.orderPct(5)).toBe(4); // its own 4 % under the edition's 6 %
     expect(limits.orderPct(7)).toBe(5); // the edition's 5 % under its own 9 %
     expect(limits.orderPct(11)).toBe(3.5); // no row of its own
@@ -29,8 +29,7 @@ describe('the limits of a site', () => {
   });
 
   it('of its own stand alone only where that is asked for', () => {
-    const limits = voltageLimits(
-      'iec',
+    const limits = chosenVoltageLimits(
       400,
       2,
       limitChoice('iec', { edition: 'own', own: { ...own, name: 'agreement' } }),
@@ -41,7 +40,7 @@ describe('the limits of a site', () => {
 
   it('leave a total that nobody limits without a limit', () => {
     const choice = limitChoice('iec', { edition: 'own', own: { voltage: own.voltage! } });
-    expect(voltageLimits('iec', 400, 2, choice).distortionPct).toBeNull();
+    expect(chosenVoltageLimits(400, 2, choice).distortionPct).toBeNull();
   });
 
   it('of current come from IEEE 519 or from the site, never from an IEC edition', () => {
@@ -61,7 +60,7 @@ describe('the limits of a site', () => {
     fc.assert(
       fc.property(fc.array(row, { maxLength: 8 }), fc.constantFrom('iec' as const, 'ieee' as const), (rows, rules) => {
         const choice = limitChoice(rules, { own: { voltage: rows, current: rows } });
-        const [plain, tight] = [voltageLimits(rules, 400, 2), voltageLimits(rules, 400, 2, choice)];
+        const [plain, tight] = [voltageLimits(rules, 400, 2), chosenVoltageLimits(400, 2, choice)];
         const current = chosenCurrentLimits(30, choice)!;
         for (let h = 2; h <= 50; h++) {
           expect(tight.orderPct(h) ?? Infinity).toBeLessThanOrEqual(plain.orderPct(h) ?? Infinity);
@@ -73,7 +72,7 @@ describe('the limits of a site', () => {
   });
 
   it('would be looser if own rows took the edition’s place (control)', () => {
-    const alone = voltageLimits('iec', 400, 2, limitChoice('iec', { edition: 'own', own }));
+    const alone = chosenVoltageLimits(400, 2, limitChoice('iec', { edition: 'own', own }));
     expect(alone.orderPct(7)!).toBeGreaterThan(voltageLimits('iec', 400, 2).orderPct(7)!);
   });
 

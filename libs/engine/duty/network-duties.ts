@@ -4,7 +4,7 @@ import { type CurrentLimits, chosenCurrentLimits } from './current-limits.js';
 import { type Duty, DutyRow, NEAR_RATIO, type Place, ratioVerdict } from './duty-row.js';
 import { type LimitChoice, limitChoice } from './limit-editions.js';
 import type { RuleSet, Verdict } from './rules.js';
-import { type VoltageLimits, voltageLimits } from './voltage-limits.js';
+import { chosenVoltageLimits, type VoltageLimits } from './voltage-limits.js';
 
 /** A limit exceeded without the bank already counts against the bank only beyond this share of the limit. */
 const BASELINE_SHARE = 0.01;
@@ -21,9 +21,9 @@ interface Baseline {
 
 /** Limits of the network at the bus. */
 export interface NetworkLimits {
-  voltage: VoltageLimits;
+  voltage: VoltageLimits<number | null>;
   /** null where the edition has no current limits or no load current is known */
-  current: CurrentLimits | null;
+  current: CurrentLimits<number | null> | null;
 }
 
 /**
@@ -43,7 +43,7 @@ export function networkLimits(basis: {
   const shortCircuitA = (basis.shortCircuitMinMva * 1e6) / (Math.sqrt(3) * basis.nominalV);
   const choice = basis.limits ?? limitChoice(basis.rules, undefined);
   return {
-    voltage: voltageLimits(basis.rules, basis.nominalV, basis.emcClass, choice),
+    voltage: chosenVoltageLimits(basis.nominalV, basis.emcClass, choice),
     current: basis.loadA > 0 ? chosenCurrentLimits(shortCircuitA / basis.loadA, choice) : null,
   };
 }

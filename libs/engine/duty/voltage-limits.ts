@@ -1,13 +1,13 @@
 import type { OrderPct } from '../network/loads.js';
-import { type LimitChoice, type LimitEdition, ownLimitsName, tighter } from './limit-editions.js';
+import { LIMIT_EDITIONS, type LimitChoice, type LimitEdition, ownLimitsName, tighter } from './limit-editions.js';
 import type { RuleSet } from './rules.js';
 
-/** Harmonic voltage limits of one edition, in % of nominal. */
-export interface VoltageLimits {
+/** Harmonic voltage limits, in % of nominal; an edition's total is a number, the user's own may be left out. */
+export interface VoltageLimits<Total extends number | null = number> {
   /** name with edition, as printed beside a figure */
   source: string;
-  /** limit on THD_V [%]; null where the edition has none */
-  distortionPct: number | null;
+  /** limit on THD_V [%] */
+  distortionPct: Total;
   /**
    * @param orderH order h
    * @returns limit on V_h [%], or null where the edition has no row
@@ -66,7 +66,9 @@ function ieeeLimits(source: string, nominalV: number): VoltageLimits {
   };
 }
 
-const EDITIONS: Record<LimitEdition, (site: { nominalV: number; emcClass: EmcClass }) => VoltageLimits> = {
+type OfEdition = (site: { nominalV: number; emcClass: EmcClass }) => VoltageLimits;
+
+const EDITIONS: Record<Exclude<LimitEdition, 'own'>, OfEdition> = {
   'IEC 61000-2-4:2002': ({ emcClass }) => ({
     source: `IEC 61000-2-4:2002 class ${emcClass}`,
     distortionPct: IEC_61000_2_4[emcClass].distortionPct,
@@ -79,34 +81,41 @@ const EDITIONS: Record<LimitEdition, (site: { nominalV: number; emcClass: EmcCla
   }),
   'IEEE 519-2014': ({ nominalV }) => ieeeLimits('IEEE 519-2014', nominalV),
   'IEEE 519-2022': ({ nominalV }) => ieeeLimits('IEEE 519-2022', nominalV),
-  own: () => ({ source: '', distortionPct: null, orderPct: () => null }),
 };
 
 /**
- * Harmonic voltage limits by rule set and chosen edition. `iec`: IEC 61000-2-4 by class, or EN 50160; `ieee`: IEEE 519 by
- * bus voltage, one limit for every order up to 50. Own rows tighten the edition; "own" stands alone.
+ * Harmonic voltage limits of a rule set's first edition. `iec`: IEC 61000-2-4 by class, orders without a row have no limit;
+ * `ieee`: IEEE 519-2022 by bus voltage, one limit for every order up to 50.
  * @param rules rule set
  * @param nominalV bus voltage [V]
- * @param emcClass electromagnetic environment class (IEC 61000-2-4)
- * @param choice edition and own rows; the rule set's first edition where absent
+ * @param emcClass electromagnetic environment class (iec)
  * @returns limits with the edition's name
- * @source iec-61000-2-4, en-50160, ieee-519-2022
+ * @source iec-61000-2-4, ieee-519-2022
  */
-export function voltageLimits(
-  rules: RuleSet,
+export function voltageLimits(rules: RuleSet, nominalV: number, emcClass: EmcClass): VoltageLimits {
+  return EDITIONS[LIMIT_EDITIONS[rules][0]]({ nominalV, emcClass });
+}
+
+/**
+ * Harmonic voltage limits of a choice: the edition's, tightened by own rows; "own" stands alone.
+ * @param nominalV bus voltage [V]
+ * @param emcClass electromagnetic environment class (IEC 61000-2-4)
+ * @param choice edition and own rows
+ * @returns limits with the edition's name
+ * @source iec-61000-2-4, en-50160, ieee-519-2014, ieee-519-2022
+ */
+export function chosenVoltageLimits(
   nominalV: number,
   emcClass: EmcClass,
-  choice?: LimitChoice,
-): VoltageLimits {
-  const edition = choice?.edition ?? (rules === 'iec' ? 'IEC 61000-2-4:2002' : 'IEEE 519-2022');
-  const limits = EDITIONS[edition]({ nominalV, emcClass });
-  const own = choice?.own;
-  if (own == null) return limits;
-  const name = ownLimitsName(own);
+  { edition, own }: LimitChoice,
+): VoltageLimits<number | null> {
+  const limits = edition === 'own' ? null : EDITIONS[edition]({ nominalV, emcClass });
+  if (own === null && limits !== null) return limits;
+  const name = own === null ? edition : ownLimitsName(own);
   return {
-    source: edition === 'own' ? name : `${limits.source} and ${name}`,
-    distortionPct: tighter(limits.distortionPct, own.distortionPct),
-    orderPct: (orderH) => tighter(limits.orderPct(orderH), ownPct(own.voltage, orderH)),
+    source: limits === null ? name : `${limits.source} and ${name}`,
+    distortionPct: tighter(limits?.distortionPct, own?.distortionPct),
+    orderPct: (orderH) => tighter(limits?.orderPct(orderH), ownPct(own?.voltage, orderH)),
   };
 }
 
