@@ -1,4 +1,5 @@
 import { type Outcome, type RecordSummary, type ScannedLevel, UTC_TABLE, type ZoneTable } from '#libs/engine/index.js';
+import { deviceTable, openDevices } from './device-words.js';
 import { dutyName } from './figure-words.js';
 import { formatApart, formatNumber, formatQuantity, GAP } from './format-number.js';
 import { formatLength, formatMoment } from './local-stamp.js';
@@ -51,6 +52,7 @@ export function resultReport(outcome: Outcome): string {
     ),
     '',
     ...dutyLines(outcome),
+    ...deviceLines(outcome),
     ...reasonLines(outcome),
   ];
   return finished(lines);
@@ -146,6 +148,20 @@ function dutyLines({ result }: Outcome): string[] {
       `${name!.padEnd(widths[0]!)}  ${value!.padStart(widths[1]!)} of ${limit!.padStart(widths[2]!)}  ${verdict}`,
   );
   return [...lines, ''];
+}
+
+/** Devices that were entered or fall short; what is open is counted. */
+function deviceLines(outcome: Outcome): string[] {
+  const { devices } = outcome.result;
+  if (devices.length === 0) return [];
+  const short = deviceTable(outcome).filter((_, at) => devices[at]!.state === 'short');
+  const lines = short.map(({ device, need, fitted }) => `${device}: ${fitted}, needs ${need}`);
+  const fits = devices.filter(({ state }) => state === 'fits').length;
+  return [
+    row('devices', `${devices.length}: ${fits} fit, ${short.length} fall short, ${openDevices(devices)} not entered`),
+    ...lines.flatMap((line) => wrapped(`  ${line}`, '    ')),
+    '',
+  ];
 }
 
 function reasonLines({ result }: Outcome): string[] {

@@ -17,6 +17,7 @@ import { pathImpedanceInto } from '../supply/supply-path.js';
 import { type ChargeStage, chargeStages } from './charge.js';
 import { type Duty, DutyRow, NEAR_RATIO } from './duty-row.js';
 import { type ExactInrush, exactInrush, type InrushStage, inrushStages } from './inrush.js';
+import type { LimitChoice } from './limit-editions.js';
 import { NetworkDuties, networkLimits } from './network-duties.js';
 import { CAPACITOR_RULES, graver, type RuleSet, type Verdict } from './rules.js';
 import { type DutyVoltages, StageDuties } from './stage-duties.js';
@@ -27,6 +28,8 @@ export interface JudgeBasis {
   frequencyHz: number;
   voltages: DutyVoltages;
   emcClass: 1 | 2 | 3;
+  /** the rule set's first edition where absent */
+  limits?: LimitChoice;
   supply: Supply;
   loads: Loads;
   reconnectDelayS: number;

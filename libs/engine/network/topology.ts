@@ -12,7 +12,9 @@ export interface CableInput {
   name?: string;
   between: [string, string];
   lengthM: number;
+  /** [Ω/km] */
   resistanceOhmPerKm: number;
+  /** [Ω/km] */
   reactanceOhmPerKm: number;
   /** equal cables side by side */
   parallel?: number;

@@ -26,6 +26,7 @@ export function basisOf(study: Judged, control: Control): JudgeBasis {
     frequencyHz: site.frequencyHz,
     voltages: { nominalV: site.nominalV, highestV: site.highestV },
     emcClass: site.emcClass,
+    limits: site.limits,
     supply: site.supply,
     loads: site.loads,
     reconnectDelayS: control.reconnectDelayS,

@@ -1,3 +1,5 @@
+import { limitChoice } from '../duty/limit-editions.js';
+import type { SiteFacts } from '../duty/site-facts.js';
 import type { Loads } from '../network/loads.js';
 import { settleTopology } from '../network/settle-topology.js';
 import type { Topology } from '../network/topology.js';
@@ -78,11 +80,37 @@ export function settleSite(site: Site, record: LoadRecord | null): Settled {
     supply: settleSupply(site.supply, defaults),
     loads: settleLoads(site, record, defaults),
     topology: settledTopology(site),
-    emcClass: site.rules === 'iec' ? (defaults.take(site.limits?.emcClass, 2, 'limits.emcClass') as 1 | 2 | 3) : 2,
+    emcClass: 2,
+    limits: limitChoice(site.rules, site.limits),
+    facts: siteFacts(site),
   };
+  // Only this edition has classes.
+  if (settled.limits.edition === 'IEC 61000-2-4:2002') {
+    settled.emcClass = defaults.take(site.limits?.emcClass, 2, 'limits.emcClass') as 1 | 2 | 3;
+  }
   if (site.recordedBank === undefined) defaults.note('default.recordedBank', 'recordedBank', {});
   if (!hasTransformer) defaults.note('supply.noTransformer', 'supply.transformers', {});
-  return { site: settled, assumptions: defaults.assumptions };
+  return { site: settled, assumptions: [...defaults.assumptions, ...understood(site)] };
+}
+
+// What stood in another form is echoed as it was understood.
+function understood(site: Site): Remark[] {
+  return (site.understood ?? []).map(({ path, given, value, unit }) =>
+    remark('understood.value', { given, value }, { path, unit }),
+  );
+}
+
+function siteFacts(site: Site): SiteFacts {
+  return {
+    place: site.place ?? {},
+    earthing: site.supply.earthing ?? null,
+    photovoltaicKw: site.supply.photovoltaicKw ?? 0,
+    fast: site.loads?.fast ?? [],
+    measured: site.loads?.measured ?? null,
+    currentTransformer: site.control?.currentTransformer ?? null,
+    generator: site.control?.generator ?? {},
+    bank: site.bank ?? null,
+  };
 }
 
 function contradictions(site: Site): Problem[] {
@@ -115,6 +143,7 @@ function contradictions(site: Site): Problem[] {
       found: '"separate"',
     });
   }
+  problems.push(...unknownBuses(site));
   if (site.recordedBank?.state === 'switching') {
     problems.push({
       code: 'not-supported-yet',
@@ -124,6 +153,18 @@ function contradictions(site: Site): Problem[] {
     });
   }
   return problems;
+}
+
+// A load at a bus that is not there would inject nothing.
+function unknownBuses(site: Site): Problem[] {
+  if (site.network === undefined) return [];
+  const names = site.network.buses.map(({ name }) => name);
+  const expected = `one of the buses ${names.map((name) => `"${name}"`).join(', ')}`;
+  return (site.loads?.distorting ?? []).flatMap(({ bus }, i) =>
+    bus === undefined || names.includes(bus)
+      ? []
+      : [{ code: 'inconsistent' as const, path: `loads.distorting[${i}].bus`, expected, found: `"${bus}"` }],
+  );
 }
 
 function settleSupply(supply: SupplyInput, defaults: Defaults): Supply {

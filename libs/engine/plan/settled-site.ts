@@ -1,4 +1,6 @@
+import type { LimitChoice } from '../duty/limit-editions.js';
 import type { RuleSet } from '../duty/rules.js';
+import type { SiteFacts } from '../duty/site-facts.js';
 import type { Loads } from '../network/loads.js';
 import type { Topology } from '../network/topology.js';
 import type { Supply } from '../supply/supply.js';
@@ -23,4 +25,6 @@ export interface SettledSite {
   /** null where the site has one bus */
   topology: Topology | null;
   emcClass: 1 | 2 | 3;
+  limits: LimitChoice;
+  facts: SiteFacts;
 }

@@ -35,7 +35,16 @@ export interface SupplyInput {
   rippleHz?: number | null;
   arrangement?: 'parallel' | 'separate';
   transformers?: Transformer[];
+  /** how the system is earthed */
+  earthing?: Earthing;
+  /** photovoltaic plant behind the same meter [kW] */
+  photovoltaicKw?: number;
 }
+
+/** Kinds of system earthing. */
+export const EARTHINGS = ['TN-S', 'TN-C', 'TN-C-S', 'TT', 'IT'] as const;
+
+export type Earthing = (typeof EARTHINGS)[number];
 
 /** The supply with every default filled in. */
 export interface Supply {
