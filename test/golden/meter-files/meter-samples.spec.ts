@@ -1,3 +1,4 @@
+// long: one entry a sample, most of it tables
 // Samples of the project's own invention, one for each way in which meter files mislead; every number is worked out by hand
 // from the file beside it.
 import { readdirSync, readFileSync } from 'node:fs';
