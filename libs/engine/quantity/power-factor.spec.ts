@@ -19,7 +19,7 @@ describe('energy power factor', () => {
     [5, 0, 1, 'no reactive energy'],
     [0, 3, null, 'no active energy: none'],
     [0, 0, null, 'nothing at all: none'],
-  ])('of %d kWh and %d kvarh is %s: %s', (activeKwh, reactiveKvarh, factor) => {
+  ])('of %d kWh and %d kvarh is %s: %s', (activeKwh, reactiveKvarh, factor, _why) => {
     expect(energyPowerFactor(activeKwh, reactiveKvarh)).toBe(factor);
   });
 });

@@ -53,7 +53,7 @@ describe('a record', () => {
     [{ laggingKvar: Float64Array.of(0, 0, -1e-9) }, 'not-finite', 'a lagging column has no sign'],
     [{ voltageV: Float64Array.of(-400, 400, 400) }, 'not-finite', 'a voltage has none'],
     [{ connectedKvar: Float64Array.of(1, 2, Number.POSITIVE_INFINITY) }, 'not-finite', 'an old bank without end'],
-  ])('%# is refused: %s, %s', (more, code) => {
+  ])('%# is refused: %s, %s', (more, code, _why) => {
     expect(problems(more).map((problem) => problem.code)).toEqual([code]);
   });
 

@@ -29,7 +29,7 @@ describe('statistics of a record', () => {
     ['endS', 7200, 'exclusive'],
     ['duplicates', 2, 'as the reader counted'],
     ['repaired', 1, 'as the reader counted'],
-  ] as const)('%s is %d: %s', (key, value) => {
+  ] as const)('%s is %d: %s', (key, value, _why) => {
     expect(summary[key]).toBeCloseTo(value, 12);
   });
 
