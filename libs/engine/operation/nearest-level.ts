@@ -89,11 +89,11 @@ export class NearestLevel {
     const present = connected[c]!;
     const kvar = this.#kvar[c]!;
     const left = mostSwitchings - switchings;
-    const low = present > left ? present - left : 0;
-    const high = present + (free[c]! < left ? free[c]! : left);
+    const low = Math.max(0, present - left);
+    const high = present + Math.min(free[c]!, left);
     if (place === this.#order.length - 1) {
       const beside = Math.floor((wantedKvar - levelKvar) / kvar);
-      const below = beside < low ? low : beside > high ? high : beside;
+      const below = Math.min(high, Math.max(low, beside));
       this.#counts[c] = below;
       this.#meet(levelKvar + below * kvar, switchings + Math.abs(below - present));
       if (below === high) return;

@@ -1,6 +1,7 @@
 import type { Control } from './control.js';
 import { type Decision, oneByOneInto } from './decide.js';
 import { NearestLevel } from './nearest-level.js';
+import { oneSizeInto } from './one-size-into.js';
 import type { SwitchedBank } from './switched-bank.js';
 
 /** What the controller sees, one entry a valid interval, length n. */
@@ -35,9 +36,13 @@ export interface SwitchingRun {
  * @source method-controller
  */
 export function simulate(bank: SwitchedBank, control: Control, view: ControllerView): SwitchingRun {
-  const state = new SwitchState(bank, control, view.intervalS);
   const connectedKvar = new Float64Array(view.beginS.length);
-  if (view.voltageScale === null && view.standby === null) runPlainInto(state, view, connectedKvar);
+  const plain = view.voltageScale === null && view.standby === null;
+  if (plain && bank.classes.length === 1 && control.mode === 'nearestLevel') {
+    return { connectedKvar, switchings: oneSizeInto(bank, control, view, connectedKvar) };
+  }
+  const state = new SwitchState(bank, control, view.intervalS);
+  if (plain) runPlainInto(state, view, connectedKvar);
   else runFullInto(state, view, connectedKvar);
   return { connectedKvar, switchings: state.switchings };
 }
