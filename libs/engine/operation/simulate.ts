@@ -32,11 +32,16 @@ export interface SwitchingRun {
  * @param bank the controller's view of the bank
  * @param control settings
  * @param view what the controller sees, length n
+ * @param connectedKvar receives the connected kvar, length n; new where absent
  * @returns connected kvar per interval and switchings per stage
  * @source method-controller
  */
-export function simulate(bank: SwitchedBank, control: Control, view: ControllerView): SwitchingRun {
-  const connectedKvar = new Float64Array(view.beginS.length);
+export function simulate(
+  bank: SwitchedBank,
+  control: Control,
+  view: ControllerView,
+  connectedKvar = new Float64Array(view.beginS.length),
+): SwitchingRun {
   const plain = view.voltageScale === null && view.standby === null;
   if (plain && bank.classes.length === 1 && control.mode === 'nearestLevel') {
     return { connectedKvar, switchings: oneSizeInto(bank, control, view, connectedKvar) };
