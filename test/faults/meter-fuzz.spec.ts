@@ -131,3 +131,21 @@ it(`reads or refuses ${FILES} damaged files and changes no accepted value (seed 
   expect(outcomes.accepted).toBeGreaterThan(FILES / 10);
   expect(outcomes.refused).toBeGreaterThan(FILES / 10);
 });
+
+it('has a comparison that no changed value passes', async () => {
+  const { text, dialect } = SAMPLES[0]!;
+  const bytes = new TextEncoder().encode(text);
+  const reading = await readMeterText(bytes);
+  expect(() => expectSame(reading, bytes, dialect)).not.toThrow();
+  const { record } = reading;
+  const changed = [
+    { activeKw: record.activeKw.with(7, record.activeKw[7]! * (1 + Number.EPSILON)) },
+    { laggingKvar: record.leadingKvar, leadingKvar: record.laggingKvar },
+    { beginS: record.beginS.map((beginS) => beginS + 3600) },
+    { beginS: record.beginS.subarray(1), activeKw: record.activeKw.subarray(1) },
+    { intervalS: 1800 },
+  ];
+  for (const change of changed) {
+    expect(() => expectSame({ ...reading, record: { ...record, ...change } }, bytes, dialect)).toThrow();
+  }
+});
