@@ -1,6 +1,7 @@
 import type { MeterMap } from '#libs/contract/meter-map.js';
 import { InputProblem } from '#libs/engine/index.js';
 import { type ColumnChoice, columnChoices, columnNamed } from './column-choice.js';
+import type { CsvView } from './csv-view.js';
 import { type HeaderColumn, readHeaderColumn } from './header-column.js';
 import { headerWindows } from './header-windows.js';
 import { readNumberText } from './number-cell.js';
@@ -21,16 +22,6 @@ export interface CsvLayout {
   time: TimeColumns;
   choices: ColumnChoice[];
   header: readonly HeaderColumn[];
-}
-
-/** The bytes read so far, the row of the file they begin with, and whether there are more. */
-export interface CsvView {
-  bytes: Uint8Array;
-  start: number;
-  end: number;
-  rowEnd: number;
-  rowsBefore: number;
-  ended: boolean;
 }
 
 interface Row {

@@ -1,4 +1,4 @@
-import type { CsvView } from './csv-layout.js';
+import type { CsvView } from './csv-view.js';
 
 const ZERO = 0x30;
 const COLON = 0x3a;
