@@ -51,6 +51,7 @@ export * from './network/stage-admittance.js';
 export * from './network/summation.js';
 export * from './network/topology.js';
 export * from './operation/control.js';
+export * from './operation/controller-view.js';
 export * from './operation/meter-after.js';
 export * from './operation/operation.js';
 export * from './operation/simulate.js';

@@ -1,8 +1,8 @@
 // How fast the program is on this machine: its two hot loops against the same work in C, and one whole plan.
 import { busesWorks } from './bench-buses.js';
+import { benchPlan } from './bench-plan.js';
 import { scanWork } from './bench-scan.js';
 import { simulationWorks } from './bench-simulate.js';
-import { benchPlan } from './bench-plan.js';
 import { compareTwins } from './compare-twins.js';
 import { crowding } from './stopwatch.js';
 

@@ -8,7 +8,7 @@ import { Chance, mutate } from '../support/mutate-file.js';
 import { type Dialect, readSlowly, SlowRefusal } from '../support/slow-meter-reading.js';
 import { runs, SEED } from '../support/soak.js';
 
-const FILES = runs(2_000, 20_000);
+const FILES = runs(1_500, 20_000);
 
 const two = (part: number) => String(part).padStart(2, '0');
 const parts = (momentS: number) => new Date(momentS * 1000).toISOString();

@@ -158,12 +158,14 @@ export function closings(bank: Bank, index: number, site: ClosingSite): Closing[
  * @param bank the bank
  * @param index the closing stage's group
  * @param site voltage, frequency, supply, count vectors
- * @returns peaks [A]
+ * @returns peaks [A], or null where the circuit could not be solved
  * @source method-inrush
  */
-export function exactInrush(bank: Bank, index: number, site: ClosingSite): ExactInrush {
+export function exactInrush(bank: Bank, index: number, site: ClosingSite): ExactInrush | null {
   const peaksA = closings(bank, index, site).map(({ circuit }) => closingPeak(circuit).peakA);
-  return { singlePeakA: peaksA[0]!, worstPeakA: peaksA.reduce((worst, peakA) => Math.max(worst, peakA)) };
+  const worstPeakA = peaksA.reduce((worst, peakA) => Math.max(worst, peakA));
+  // A circuit far from any that is built (a reactor of nothing but resistance) has modes that are not found.
+  return Number.isFinite(worstPeakA) ? { singlePeakA: peaksA[0]!, worstPeakA } : null;
 }
 
 // Equal branches in parallel are one branch of their sum.

@@ -87,13 +87,13 @@ export function judgeBank(model: NetworkModel, bank: Bank, levels: Level[], basi
     frequencyHz: basis.frequencyHz,
     shortCircuitMva: empty.shortCircuitMva,
     rules: basis.rules,
-  }).map((stage, g) => ({ ...stage, worstPeakA: exact[g]!.worstPeakA }));
+  }).map((stage, g) => ({ ...stage, worstPeakA: exact[g]?.worstPeakA ?? null }));
   const duties = [
     ...stages.flatMap((stage, g) => [
       ...stage.duties(),
       ...dischargeDuty(bank, charge[g]!, basis.rules),
       ...inrushDuty(bank, inrush[g]!, basis.rules),
-      ...exactInrushDuty(bank, inrush[g]!, exact[g]!, basis.rules),
+      ...exactInrushDuty(bank, inrush[g]!, exact[g] ?? null, basis.rules),
     ]),
     ...bankDuties.duties(),
   ];
@@ -136,7 +136,7 @@ export function inrushDuty(bank: Bank, inrush: InrushStage, rules: RuleSet): Dut
   return inrushRow(bank, inrush, { name: 'inrush current', peakA, singleA: inrush.singlePeakA, rules });
 }
 
-function exactInrushes(model: NetworkModel, bank: Bank, levels: Level[], basis: JudgeBasis): ExactInrush[] {
+function exactInrushes(model: NetworkModel, bank: Bank, levels: Level[], basis: JudgeBasis): (ExactInrush | null)[] {
   return bank.groups.map((_, g) =>
     exactInrush(bank, g, {
       nominalV: basis.voltages.nominalV,
@@ -165,7 +165,7 @@ export function closingDuties(model: NetworkModel, bank: Bank, levels: Level[], 
   });
   if (closed.every(({ limitPeakA }) => limitPeakA === null)) return [];
   const exact = exactInrushes(model, bank, levels, basis);
-  return closed.flatMap((stage, g) => exactInrushDuty(bank, stage, exact[g]!, basis.rules));
+  return closed.flatMap((stage, g) => exactInrushDuty(bank, stage, exact[g] ?? null, basis.rules));
 }
 
 /**
@@ -180,7 +180,8 @@ export function dischargeDuties(bank: Bank, basis: JudgeBasis): Duty[] {
   return charge.flatMap((stage) => dischargeDuty(bank, stage, basis.rules));
 }
 
-function exactInrushDuty(bank: Bank, inrush: InrushStage, exact: ExactInrush, rules: RuleSet): Duty[] {
+function exactInrushDuty(bank: Bank, inrush: InrushStage, exact: ExactInrush | null, rules: RuleSet): Duty[] {
+  if (exact === null) return [];
   const { worstPeakA: peakA, singlePeakA: singleA } = exact;
   return inrushRow(bank, inrush, { name: 'inrush current, exact', peakA, singleA, rules });
 }

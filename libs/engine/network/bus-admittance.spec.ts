@@ -3,7 +3,11 @@ import { networkTable } from './bus-admittance.js';
 
 const path = { source: { rOhm: 0.001, xOhm: 0.01 }, transformers: [], resistanceExponent: 0.5 };
 const at = (orderH: number, dampingKw: number, motorSharePct: number) => {
-  const table = networkTable({ path, dampingKw }, { nominalV: 400, motorSharePct }, Float64Array.of(orderH));
+  const table = networkTable(
+    { path, state: null, dampingKw },
+    { nominalV: 400, motorSharePct },
+    Float64Array.of(orderH),
+  );
   return { re: table.bus.re[0]!, im: table.bus.im[0]!, zs: [table.source.re[0]!, table.source.im[0]!] };
 };
 

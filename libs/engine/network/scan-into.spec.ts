@@ -1,5 +1,6 @@
 import { describe, expect, it } from 'vitest';
-import { admittanceSquareInto, LEAST_SIEMENS, scanEqualStagesInto } from './scan-into.js';
+import { LEAST_SIEMENS } from './bus-admittance.js';
+import { admittanceSquareInto, scanEqualStagesInto } from './scan-into.js';
 
 const bus = { re: Float64Array.of(0.5, 0.1, 2), im: Float64Array.of(-3, -1, -0.2) };
 const stage = { re: Float64Array.of(0.01, 0, 0.3), im: Float64Array.of(0.4, 0.2, -0.1) };

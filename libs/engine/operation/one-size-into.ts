@@ -1,5 +1,5 @@
 import type { Control } from './control.js';
-import type { ControllerView } from './simulate.js';
+import type { ControllerView } from './controller-view.js';
 import type { SwitchedBank } from './switched-bank.js';
 
 /** Comparisons of candidates carry this share of the smallest stage. */

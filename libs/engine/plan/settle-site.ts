@@ -143,7 +143,6 @@ function contradictions(site: Site): Problem[] {
       found: '"separate"',
     });
   }
-  problems.push(...unknownBuses(site));
   if (site.recordedBank?.state === 'switching') {
     problems.push({
       code: 'not-supported-yet',
@@ -153,18 +152,6 @@ function contradictions(site: Site): Problem[] {
     });
   }
   return problems;
-}
-
-// A load at a bus that is not there would inject nothing.
-function unknownBuses(site: Site): Problem[] {
-  if (site.network === undefined) return [];
-  const names = site.network.buses.map(({ name }) => name);
-  const expected = `one of the buses ${names.map((name) => `"${name}"`).join(', ')}`;
-  return (site.loads?.distorting ?? []).flatMap(({ bus }, i) =>
-    bus === undefined || names.includes(bus)
-      ? []
-      : [{ code: 'inconsistent' as const, path: `loads.distorting[${i}].bus`, expected, found: `"${bus}"` }],
-  );
 }
 
 function settleSupply(supply: SupplyInput, defaults: Defaults): Supply {
