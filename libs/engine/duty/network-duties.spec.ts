@@ -23,13 +23,15 @@ const basis = { nominalV: 400, emcClass: 2 as const, shortCircuitMinMva: 10, loa
 // A flow as it is handed round, at one order, its bus voltage and source current in % of nominal and of 100 A.
 function flow(level: number, pct: { voltage: number; current?: number }, corner = 0): Flow {
   const { voltage, current = 0 } = pct;
+  const voltageV = Float64Array.of((voltage * 4) / Math.sqrt(3));
   return {
     level,
     levelKvar: 50 * level,
     vector: Int32Array.of(level),
     corner: model.corners.corners[corner]!,
     ordersH: Float64Array.of(11),
-    voltageV: Float64Array.of((voltage * 4) / Math.sqrt(3)),
+    voltageV,
+    buses: [{ voltageV, voltageDistortionPct: voltage }],
     sourceA: Float64Array.of(current),
     bankA: Float64Array.of(0),
     stageA: [],
