@@ -26,6 +26,8 @@ const PACKAGE_HOMES = {
   rxjs: ['apps/server'],
   pino: ['apps/server', 'apps/cli'],
   commander: ['apps/cli'],
+  react: ['apps/web'],
+  'react-dom': ['apps/web'],
 };
 
 /** What the page loads or the engine is made of runs in a browser too. */
