@@ -2,11 +2,12 @@ import { civilDate, localTime, offsetAtS, type ZoneTable } from '#libs/engine/in
 import type { ChartTable } from './chart.js';
 import { formatNumber, formatQuantity } from './format-number.js';
 import { monthLetters } from './local-stamp.js';
-import { niceStep } from './ticks.js';
 
 /** Inks between nothing and the most. */
 const STEPS = 7;
 const DAY_S = 86_400;
+/** Steps that read well, in a power of ten. */
+const ROUND = [1, 1.5, 2, 2.5, 3, 4, 5, 6, 8, 10];
 
 /** A record by day and hour, as data: what a cell holds is a step of ink. */
 export interface YearMap {
@@ -82,7 +83,9 @@ export function yearMap(parts: YearMapParts): YearMap {
 }
 
 function boundsOf(most: number): number[] {
-  const step = niceStep(0, Math.max(most, 1e-9), STEPS - 1);
+  const raw = Math.max(most, 1e-9) / STEPS;
+  const power = 10 ** Math.floor(Math.log10(raw));
+  const step = (ROUND.find((factor) => factor * power >= raw * (1 - 1e-9)) ?? 10) * power;
   const bounds = [];
   for (let n = 0; n < STEPS && n * step < most; n++) bounds.push(n * step);
   return [...bounds, most];

@@ -129,7 +129,9 @@ function StageBlock({
   return (
     <>
       <rect className={`stroke-bank ${at % 2 === 0 ? 'fill-wash' : 'fill-wash2'}`} x={0.6} y={FLOOR - height} width={wide} height={height} />
-      <path className="stroke-bank" d={`M${middle - 7} ${FLOOR - height + 7}h14m-14 4h14m-14 4h14`} />
+      {height < 44 ? null : (
+        <path className="stroke-bank" d={`M${middle - 7} ${FLOOR - height + 7}h14m-14 4h14m-14 4h14`} />
+      )}
       {pitch < 34 ? null : (
         <text className="bank" fontWeight="600" x={middle} y={FLOOR - 6} textAnchor="middle">
           {formatNumber(kvar)}

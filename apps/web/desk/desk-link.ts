@@ -58,6 +58,7 @@ type AnswerOf<K extends string> = Extract<DeskAnswered, Record<K, unknown>>[K & 
 interface Answers {
   opened: AnswerOf<'opened'>;
   look: AnswerOf<'look'>;
+  warm: AnswerOf<'warm'>;
   ratios: AnswerOf<'ratios'>;
   trace: AnswerOf<'trace'>;
 }

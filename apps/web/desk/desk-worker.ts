@@ -54,6 +54,9 @@ async function answerOf(asked: DeskAsked): Promise<DeskAnswered> {
       const { study, outcome } = fullLook(opened(), await read(asked.look));
       return { ticket, ratios: ratioRows(study, outcome) };
     }
+    case 'warm':
+      await warmUp(opened(), asked.look);
+      return { ticket, warm: true };
     case 'trace':
       return { ticket, trace: traceOf(opened()) };
   }
@@ -115,6 +118,18 @@ function judged(studies: StudyCache, site: Site, wanted: Look['depth']): { looke
   const { outcome, study } = fullLook(studies, site);
   last = { ...outcome, result: putInWords(outcome.result) };
   return { looked: { outcome: last, study }, depth: 'full' };
+}
+
+/** Runs what follows the hand a few times beforehand: the first runs of any code are slow ones. */
+async function warmUp(studies: StudyCache, asked: LookAsked): Promise<void> {
+  const site = await read(asked);
+  const { outcome } = judged(studies, site, 'full').looked;
+  for (let run = 0; run < 3; run++) {
+    const looked = quickLook(studies, site, outcome);
+    for (const station of ['bank', 'need', 'network'] as const) {
+      stationCharts(looked, station, asked.picks, () => studies.sweep(looked.study));
+    }
+  }
 }
 
 function traceOf({ record }: StudyCache): Trace {

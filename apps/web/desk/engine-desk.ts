@@ -21,6 +21,7 @@ export class EngineDesk {
   readonly #ears: DeskEars;
   #pending: LookAsked | null = null;
   #isLooking = false;
+  #isWarm = false;
   #rest: ReturnType<typeof setTimeout> | undefined;
   #opening: Promise<unknown>;
 
@@ -38,6 +39,10 @@ export class EngineDesk {
    */
   look(asked: LookAsked, isFullOnly = false): void {
     clearTimeout(this.#rest);
+    if (!this.#isWarm) {
+      this.#isWarm = true;
+      void this.#warmUp(asked);
+    }
     if (!isFullOnly) {
       this.#pending = { ...asked, depth: 'quick' };
       void this.#follow();
@@ -61,6 +66,10 @@ export class EngineDesk {
     clearTimeout(this.#rest);
     this.#near.close();
     this.#far.close();
+  }
+
+  async #warmUp(asked: LookAsked): Promise<void> {
+    await this.#opening.then(() => this.#near.ask({ ask: 'warm', look: asked }, 'warm')).catch(() => undefined);
   }
 
   async #follow(): Promise<void> {

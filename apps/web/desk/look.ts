@@ -81,10 +81,12 @@ export type DeskAsked =
   | { ask: 'open'; ticket: number; columnsUrl: string; summary: RecordSummary; timeZone: string }
   | { ask: 'look'; ticket: number; look: LookAsked }
   | { ask: 'ratios'; ticket: number; look: LookAsked }
+  | { ask: 'warm'; ticket: number; look: LookAsked }
   | { ask: 'trace'; ticket: number };
 
 export type DeskAnswered =
   | { ticket: number; opened: true }
+  | { ticket: number; warm: true }
   | { ticket: number; look: Look }
   | { ticket: number; ratios: RatioRow[] }
   | { ticket: number; trace: Trace }

@@ -268,6 +268,7 @@ export class SiteDesk {
       fault: null,
       problems: [],
       ...(asked.depth === 'quick' ? { followedMs: tookMs } : {}),
+
     });
   }
 

@@ -145,8 +145,13 @@ function networkCharts(outcome: Outcome, picks: Picks): NonNullable<StationChart
   const duties = dutyBars(outcome.result.duties);
   const levelsKvar = outcome.margins.levelsKvar;
   const margins = marginMap(outcome.margins, own);
+  const line = formatQuantity(picks.levelKvar ?? levelsKvar.at(-1) ?? 0, 'kvar');
+  const explained = (chart: Chart, words: string): Chart => ({
+    ...thinned(chart),
+    caption: `${chart.caption} Band: all levels. Line: ${words}. Dashed: no bank. Ticks: each level’s peak, heavy near an order present.`,
+  });
   if (outcome.rival === null) {
-    return { impedance: thinned(figure.chart(undefined, levelKvar)), margins, rival: null, duties, levelsKvar };
+    return { impedance: explained(figure.chart(undefined, levelKvar), line), margins, rival: null, duties, levelsKvar };
   }
   const { bank, verdict, margins: other } = outcome.rival;
   const name = bankName(bank.groups);
@@ -156,9 +161,9 @@ function networkCharts(outcome: Outcome, picks: Picks): NonNullable<StationChart
     mostOhm: Math.max(figure.scale.mostOhm, second.scale.mostOhm),
   };
   return {
-    impedance: thinned(figure.chart(scale, levelKvar)),
+    impedance: explained(figure.chart(scale, levelKvar), line),
     margins,
-    rival: { name, verdict, impedance: thinned(second.chart(scale)), margins: marginMap(other, name) },
+    rival: { name, verdict, impedance: explained(second.chart(scale), 'all stages in'), margins: marginMap(other, name) },
     duties,
     levelsKvar,
   };

@@ -82,10 +82,10 @@ function DutySvg({ figure, width }: { figure: BarFigure; width: number }) {
       <text className="axis" x={limit} y={11} textAnchor="middle">
         limit
       </text>
+      <path className="stroke-ink" strokeWidth="2" d={`M${limit} 16V${height}`} />
       {bars.map((bar, k) => (
         <DutyRow key={bar.name} {...{ bar, hatch, width, scale, to }} y={18 + k * TALL} />
       ))}
-      <path className="stroke-ink" strokeWidth="2" d={`M${limit} 16V${height}`} />
     </svg>
   );
 }
@@ -97,13 +97,14 @@ function DutyRow({ bar, hatch, width, scale, to, y }: { bar: Bar; hatch: string;
   const look = bar.verdict === 'avoid' ? 'fill-avoid' : bar.verdict === 'watch' ? 'stroke-watch' : 'fill-mid stroke-ink';
   return (
     <g>
-      <text x={0} y={y + 12}>
+      <text className="halo" x={0} y={y + 12}>
         {bar.name}
       </text>
       <path className="grid" d={`M0 ${y + 28}H${to * scale}`} />
       <rect className={look} fill={fill} x={0.5} y={y + 18} width={Math.max(0, end - 0.5)} height={8} />
       {isBroken ? <path stroke="var(--sheet)" strokeWidth="1.6" d={`M${end - 12} ${y + 28}l6 -12m0 12l6 -12`} /> : null}
       <path className="stroke-ink" strokeDasharray="1.5 2" d={`M${NEAR_PCT * scale} ${y + 16}v12`} />
+      <path className="stroke-ink" strokeWidth="2" d={`M${100 * scale} ${y + 15}v14`} />
       <MarkAt verdict={bar.verdict ?? null} x={width - 92} y={y + 2} />
       <text x={width} y={y + 12} textAnchor="end" className={bar.verdict === 'clear' ? '' : 'strong'}>
         {bar.text}

@@ -118,7 +118,7 @@ function PointWords({ marks, box }: { marks: Point[]; box: PlotBox }) {
         if (mark.side !== 'right') {
           const isOut = x - 10 - textWidth(mark.text!) < 0;
           return (
-            <text key={mark.text} x={isOut ? x + 10 : x - 10} y={y - 6} textAnchor={isOut ? 'start' : 'end'}>
+            <text key={mark.text} className="halo" x={isOut ? x + 10 : x - 10} y={y - 6} textAnchor={isOut ? 'start' : 'end'}>
               {mark.text}
             </text>
           );
@@ -130,7 +130,7 @@ function PointWords({ marks, box }: { marks: Point[]; box: PlotBox }) {
         return (
           <g key={mark.text}>
             <path className="stroke-soft" strokeWidth="0.8" d={`M${x + (isOut ? -5 : 5)} ${y}L${far} ${at}`} />
-            <text x={isOut ? far - 3 : far + 3} y={at + 4} textAnchor={isOut ? 'end' : 'start'}>
+            <text className="halo" x={isOut ? far - 3 : far + 3} y={at + 4} textAnchor={isOut ? 'end' : 'start'}>
               {mark.text}
             </text>
           </g>

@@ -72,6 +72,7 @@ function YearSvg({ map, width, onDay }: { map: YearMap; width: number; onDay: ((
           d={cellsPath(map, step, { cell, row })}
         />
       ))}
+      <path className="beyond-edge" d={beyondEdge(map, { cell, row })} />
       {map.months.map(({ name, from, to }) => (
         <g key={`${name}${from}`}>
           {from === 0 ? null : <path className="month" d={`M${LEFT + from * cell} ${TOP}V${bottom}`} />}
@@ -109,6 +110,22 @@ function cellsPath(map: YearMap, step: number, { cell, row }: { cell: number; ro
   return parts.join('');
 }
 
+/** The outline of what lies beyond the bank. */
+function beyondEdge(map: YearMap, { cell, row }: { cell: number; row: number }): string {
+  const isBeyond = (day: number, hour: number) =>
+    hour >= 0 && hour < ROWS && map.cells[day * ROWS + hour] === BEYOND_CELL;
+  const parts: string[] = [];
+  for (let day = 0; day < map.days; day++) {
+    for (let hour = 0; hour < ROWS; hour++) {
+      if (!isBeyond(day, hour)) continue;
+      const [x, y] = [(LEFT + day * cell).toFixed(1), TOP + hour * row];
+      if (!isBeyond(day, hour - 1)) parts.push(`M${x} ${y}h${cell.toFixed(1)}`);
+      if (!isBeyond(day, hour + 1)) parts.push(`M${x} ${y + row}h${cell.toFixed(1)}`);
+    }
+  }
+  return parts.join('');
+}
+
 function YearLegend({ map, y, width }: { map: YearMap; y: number; width: number }) {
   const texts = legendOf(map);
   const words = width < 620 ? '' : map.measure;
@@ -123,7 +140,7 @@ function YearLegend({ map, y, width }: { map: YearMap; y: number; width: number 
       {texts.slice(0, -1).map((text, at) => (
         <g key={text}>
           <rect className={`cell-${at}`} x={from + at * step} y={y + 12} width={step} height={10} />
-          {at % 2 === 0 ? (
+          {at % 2 === 0 && from + at * step < end - textWidth(text) - 8 ? (
             <text className="axis" x={from + at * step} y={y + 8} textAnchor="middle">
               {text}
             </text>

@@ -3,7 +3,7 @@ import { valueAt } from './document-path.js';
 import { FieldFrame, refusalOf } from './field-frame.js';
 
 /** A name of the site file. */
-export function TextField({ path, label }: { path: string; label: string }) {
+export function TextField({ path, label, isWide = false }: { path: string; label: string; isWide?: boolean }) {
   const { desk, state } = useDesk();
   const value = valueAt(state.document, path);
   return (
@@ -11,6 +11,7 @@ export function TextField({ path, label }: { path: string; label: string }) {
       <input
         id={`field:${path}`}
         value={typeof value === 'string' ? value : ''}
+        className={isWide ? 'wide' : undefined}
         autoComplete="off"
         onChange={({ target }) =>
           desk.type(path, target.value, { value: target.value === '' ? undefined : target.value })

@@ -1,7 +1,7 @@
 import { useState } from 'react';
 import type { Remark, Result } from '#libs/engine/index.js';
 import { formatQuantity, formatRange } from '#libs/present/format-number.js';
-import { remarkConsequence } from '#libs/present/remark-words.js';
+import { messageOf, remarkConsequence } from '#libs/present/remark-words.js';
 import { siteAddress, stationOfPath } from '../address.js';
 import { useDesk } from '../desk/use-desk.js';
 import { latestResult } from './latest-result.js';
@@ -109,7 +109,8 @@ export function openPoints({ reasons, record, assumptions, duties }: Result): Po
             effect: '',
           },
         ];
-  const points = [...reasons.map(pointOf), ...unjudged, ...record.notes.map(pointOf), ...assumptions.map(pointOf)];
+  const unsettled = reasons.filter(({ code }) => messageOf(code)?.level !== 'information');
+  const points = [...unsettled.map(pointOf), ...unjudged, ...record.notes.map(pointOf), ...assumptions.map(pointOf)];
   return points
     .map((point, at) => ({ ...point, key: `${at}:${point.key}` }))
     .sort((a, b) => (b.spread ?? -1) - (a.spread ?? -1));

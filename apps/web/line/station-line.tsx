@@ -23,7 +23,7 @@ export function StationLine({ siteId, open }: { siteId: string; open: Station })
   const { state } = useDesk();
   return (
     <nav className="line-nav" aria-label="Stations of the plan">
-      <ol className="line">
+      <ol className="stations">
         {STATIONS.map((station, at) => (
           <li
             key={station}

@@ -60,6 +60,7 @@ function Handle({ box, x, text }: { box: ReturnType<typeof plotBox>; x: number; 
       aria-hidden="true"
     >
       <path className="stroke-ink" strokeWidth="1.6" d={`M${x} ${box.top - 4}V${box.bottom}`} />
+      <rect className="fill-sheet" x={x - 20} y={box.bottom + 2} width={40} height={22} />
       <path className="fill-ink" d={`M${x} ${box.bottom + 1}l8 6v20h-16v-20Z`} />
       <path stroke="var(--sheet)" strokeWidth="1.4" d={`M${x - 3} ${box.bottom + 12}h6m-6 4h6m-6 4h6`} />
       <rect

@@ -5,6 +5,7 @@ import { isChanged, staleFrom } from '../desk/desk-state.js';
 import { useDesk } from '../desk/use-desk.js';
 import { VerdictWords } from '../draw/verdict-mark.js';
 import { Headline } from '../working/headline.js';
+import { FindingsList } from './findings-list.js';
 
 /** The paper: preview, download, what changed since the last one. */
 export function ProposalSheet() {
@@ -32,7 +33,12 @@ export function ProposalSheet() {
   const isOlder = isChanged(state) || staleFrom(state) !== null;
   return (
     <>
-      <Headline figures={[{ value: revision, under: 'revision, draft', digits: 'given' }]}>
+      <Headline
+        figures={[
+          { value: kept.result.bank.effectiveKvar, unit: 'kvar', under: 'effective', id: 'bank.effectiveKvar' },
+          { value: revision, under: 'revision, draft', digits: 'given' },
+        ]}
+      >
         {kept.kind === 'plan' ? 'Proposed' : 'Judged'}: {proposed}
       </Headline>
       {isOlder ? (
@@ -54,8 +60,9 @@ export function ProposalSheet() {
             Open it beside this page
           </a>
         </p>
-        <iframe className="paper no-print" src={`${links.proposal}#view=FitH`} title={`Proposal ${number}, revision ${revision}`} />
+        <iframe className="paper no-print" src={`${links.proposal}#toolbar=0&view=FitH`} title={`Proposal ${number}, revision ${revision}`} />
       </section>
+      <FindingsList />
       <Changes revisions={revisions} />
       <section className="section" aria-labelledby="papers">
         <h2 id="papers">Every revision is kept</h2>

@@ -21,11 +21,20 @@ export interface TracePicture {
 
 const LEFT = 44;
 const BOTTOM = 22;
-const TOP = 18;
+const GAP = 26;
 
-/** Draws a stretch of the record: per column of pixels the least and greatest value, so that no peak is lost. */
+/** A strip of the picture with one quantity. */
+interface Strip {
+  column: TracePyramid;
+  unit: string;
+  top: number;
+  bottom: number;
+  colour: string;
+}
+
+/** Draws a stretch of the record in two strips: per column of pixels the least and greatest value, so that no peak is lost. */
 export function drawTrace(canvas: HTMLCanvasElement, picture: TracePicture): void {
-  const { width, height, kw, kvar, view } = picture;
+  const { width, height, kw, kvar } = picture;
   const ratio = window.devicePixelRatio || 1;
   if (canvas.width !== Math.round(width * ratio)) canvas.width = Math.round(width * ratio);
   if (canvas.height !== Math.round(height * ratio)) canvas.height = Math.round(height * ratio);
@@ -35,45 +44,48 @@ export function drawTrace(canvas: HTMLCanvasElement, picture: TracePicture): voi
   pen.clearRect(0, 0, width, height);
   const style = getComputedStyle(canvas);
   const colour = (name: string) => style.getPropertyValue(name).trim();
-  const all = [kw, kvar].map((column) => column.extent(Math.floor(view.from), Math.ceil(view.to)));
-  const axis = linearAxis('', '', {
-    least: Math.min(0, ...all.map(({ least }) => least)),
-    most: Math.max(...all.map(({ most }) => most)),
-  });
-  const y = (value: number) => height - BOTTOM - placeOnAxis(axis, value) * (height - BOTTOM - TOP);
   pen.font = `12.5px ${style.fontFamily}`;
   pen.textBaseline = 'middle';
-  pen.textAlign = 'right';
-  for (const tick of axis.ticks) {
-    pen.fillStyle = colour('--soft');
-    pen.fillText(formatNumber(tick.at, 'given'), LEFT - 8, y(tick.at));
-    pen.fillStyle = colour(tick.at === 0 ? '--ink' : '--hair');
-    pen.fillRect(LEFT, y(tick.at), width - LEFT, tick.at === 0 ? 1.2 : 0.6);
-  }
-  pen.fillStyle = colour('--soft');
-  pen.fillText('kW, kvar', LEFT + 6, 7);
-  drawColumn(pen, picture, { column: kvar, y, colour: colour('--bank'), wide: 1.3 });
-  drawColumn(pen, picture, { column: kw, y, colour: colour('--ink'), wide: 1.6 });
+  const middle = (height - BOTTOM) / 2;
+  const strips: Strip[] = [
+    { column: kw, unit: 'kW', top: GAP - 6, bottom: middle, colour: colour('--ink') },
+    { column: kvar, unit: 'kvar', top: middle + GAP, bottom: height - BOTTOM, colour: colour('--ink') },
+  ];
+  for (const strip of strips) drawStrip(pen, picture, strip, { soft: colour('--soft'), hair: colour('--hair') });
   drawTimes(pen, picture, colour('--soft'));
 }
 
-function drawColumn(
+function drawStrip(
   pen: CanvasRenderingContext2D,
-  { view, width }: TracePicture,
-  { column, y, colour, wide }: { column: TracePyramid; y: (value: number) => number; colour: string; wide: number },
+  picture: TracePicture,
+  { column, unit, top, bottom, colour }: Strip,
+  { soft, hair }: { soft: string; hair: string },
 ): void {
+  const { view, width } = picture;
+  const { least, most } = column.extent(Math.floor(view.from), Math.ceil(view.to));
+  const axis = linearAxis('', unit, { least: Math.min(0, least), most: Math.max(most, 1e-9) }, 3);
+  const y = (value: number) => bottom - placeOnAxis(axis, value) * (bottom - top);
+  pen.textAlign = 'right';
+  for (const tick of axis.ticks) {
+    pen.fillStyle = soft;
+    pen.fillText(formatNumber(tick.at, 'given'), LEFT - 8, y(tick.at));
+    pen.fillStyle = tick.at === 0 ? colour : hair;
+    pen.fillRect(LEFT, y(tick.at), width - LEFT, tick.at === 0 ? 1.2 : 0.6);
+  }
+  pen.fillStyle = soft;
+  pen.fillText(unit, LEFT - 8, top - 13);
   const across = width - LEFT;
   const span = view.to - view.from;
   pen.strokeStyle = colour;
-  pen.lineWidth = wide;
+  pen.lineWidth = 1.2;
   pen.beginPath();
   for (let pixel = 0; pixel < across; pixel++) {
-    const from = view.from + (pixel / across) * span;
-    const to = view.from + ((pixel + 1) / across) * span;
-    const { least, most } = column.extent(Math.floor(from), Math.max(Math.floor(from) + 1, Math.floor(to)));
-    if (pixel === 0) pen.moveTo(LEFT, y(most));
-    pen.lineTo(LEFT + pixel, y(most));
-    if (least !== most) pen.lineTo(LEFT + pixel, y(least));
+    const from = Math.floor(view.from + (pixel / across) * span);
+    const to = Math.max(from + 1, Math.floor(view.from + ((pixel + 1) / across) * span));
+    const found = column.extent(from, to);
+    if (pixel === 0) pen.moveTo(LEFT, y(found.most));
+    pen.lineTo(LEFT + pixel, y(found.most));
+    if (found.least !== found.most) pen.lineTo(LEFT + pixel, y(found.least));
   }
   pen.stroke();
 }

@@ -6,7 +6,7 @@ import { drawTrace, type TraceView } from './draw-trace.js';
 import { TracePyramid } from './trace-pyramid.js';
 import { useTheme } from '../theme.js';
 
-const HEIGHT = 200;
+const HEIGHT = 240;
 
 /** The record itself, from the year to single intervals: the wheel zooms, dragging moves, arrow keys do both. */
 export function TraceFigure({ recordId }: { recordId: string }) {
@@ -24,7 +24,7 @@ export function TraceFigure({ recordId }: { recordId: string }) {
     <section className="section" aria-labelledby="trace">
       <h2 id="trace">The record, down to its intervals</h2>
       <p className="caption">
-        Heavy: kW. Blue: kvar, lagging up. The wheel zooms, dragging moves; by keyboard + and − zoom, arrows move. Times
+        Above kW, below kvar, lagging up. The wheel zooms, dragging moves; by keyboard + and − zoom, arrows move. Times
         are UTC.
       </p>
       <div className="plot" ref={place} style={{ minHeight: HEIGHT }}>

@@ -121,17 +121,19 @@ function Background() {
       <p className="caption">
         {list === undefined ? 'Not known yet.' : list.length === 0 ? 'Declared: the supply is free of distortion.' : 'Voltage behind the source, % of nominal.'}
       </p>
-      <div className="fields">
-        {list?.map((_, at) => (
-          <fieldset key={at} aria-label={`Background order ${at + 1}`}>
+      {list?.map((_, at) => (
+        <fieldset key={at} aria-label={`Background order ${at + 1}`}>
+          <div className="fields">
             <QuantityField path={`${path}[${at}].orderH`} label="order" />
             <QuantityField path={`${path}[${at}].pct`} label="voltage" unit="%" />
-            <button type="button" className="way" onClick={() => put(list.toSpliced(at, 1))}>
-              Remove
-            </button>
-          </fieldset>
-        ))}
-      </div>
+            <p className="row">
+              <button type="button" className="way" onClick={() => put(list.toSpliced(at, 1))}>
+                Remove
+              </button>
+            </p>
+          </div>
+        </fieldset>
+      ))}
     </section>
   );
 }

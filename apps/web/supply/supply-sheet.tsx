@@ -60,7 +60,7 @@ export function SupplySheet() {
       <section className="section" aria-labelledby="rules">
         <h2 id="rules">Judged by</h2>
         <div className="fields">
-          <TextField path="name" label="name of the site" />
+          <TextField path="name" label="name of the site" isWide />
           <ChoiceField
             path="rules"
             label="rules"
