@@ -4,7 +4,9 @@ import { Head } from './line/head.js';
 import { SitePage } from './line/site-page.js';
 import { SitesPage } from './sites/sites-page.js';
 
-const SurveySheet = lazy(() => import('./record/survey-sheet.js').then(({ SurveySheet: sheet }) => ({ default: sheet })));
+const SurveySheet = lazy(() =>
+  import('./record/survey-sheet.js').then(({ SurveySheet: sheet }) => ({ default: sheet })),
+);
 
 /** The page: the list of sites, one site, or a word that nothing is here. */
 export function App() {

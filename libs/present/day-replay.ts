@@ -93,7 +93,12 @@ function firstAt(beginS: Float64Array, s: number): number {
   return low;
 }
 
-function stagesOf(outcome: Outcome, study: Study, control: Control, stretch: { from: number; to: number }): Uint8Array[] {
+function stagesOf(
+  outcome: Outcome,
+  study: Study,
+  control: Control,
+  stretch: { from: number; to: number },
+): Uint8Array[] {
   const bank = switchedBank(outcome.bank, outcome.site.nominalV);
   const all = stagesThrough(bank, control, controllerView(study, control), stretch);
   const fixed = outcome.bank.groups.flatMap((group) => Array.from({ length: group.count }, () => group.fixed));

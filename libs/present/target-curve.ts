@@ -58,7 +58,13 @@ export function targetCurve(sweep: TargetSweep, at: TargetNeed): Chart {
     marks: [
       { kind: 'disc', x: at.powerFactor, y: at.maxKvar, text: `maximum ${formatNumber(at.maxKvar)}`, side: 'left' },
       { kind: 'disc', x: at.powerFactor, y: at.p95Kvar, text: `P95 ${formatNumber(at.p95Kvar)}`, side: 'right' },
-      { kind: 'disc', x: at.powerFactor, y: at.p50Kvar, text: `half the year ${formatNumber(at.p50Kvar)}`, side: 'left' },
+      {
+        kind: 'disc',
+        x: at.powerFactor,
+        y: at.p50Kvar,
+        text: `half the year ${formatNumber(at.p50Kvar)}`,
+        side: 'left',
+      },
     ],
     table: { columns: ['target', 'P95 kvar', 'maximum kvar'].map((head) => ({ head, right: true })), rows },
   };

@@ -66,7 +66,7 @@ export function yearMap(parts: YearMapParts): YearMap {
     const at = (day - firstDay) * 24 + Math.floor((localS - day * DAY_S) / 3600);
     if (!(greatest[at]! >= values[i]!)) greatest[at] = values[i]!;
   }
-  const most = greatest.reduce((top, value) => (value > top ? value : top), 0);
+  const most = greatest.reduce((top, value) => (Number.isNaN(value) ? top : Math.max(top, value)), 0);
   const bounds = boundsOf(parts.beyond === null || parts.beyond <= 0 ? most : Math.min(most, parts.beyond));
   const counts = { gaps: 0, beyond: 0 };
   const cells = Uint8Array.from(greatest, (value) => cellOf(value, bounds, { beyond: parts.beyond, counts }));

@@ -1,5 +1,5 @@
 import { AxeBuilder } from '@axe-core/playwright';
-import type { Browser } from 'playwright-core';
+import type { Browser, Page } from 'playwright-core';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { CHROMIUM, openPage, startBrowser } from '../support/browser.js';
 import { databases, type TestDatabase } from '../support/databases.js';
@@ -36,12 +36,7 @@ describe.runIf(CHROMIUM !== null)('every page, by the automated rules of accessi
     const found: string[] = [];
     const addresses = ['#/', '#/nowhere', ...Object.keys(STATIONS_SHOWN).map((name) => `#/sites/${siteId}/${name}`)];
     for (const address of [...addresses, `#/sites/${siteId}/survey`]) {
-      await page.goto(`${server.base}/${address}`);
-      await page.getByText(STATIONS_SHOWN[address.split('/').at(-1) ?? ''] ?? /site/i).first().waitFor();
-      for (const name of ['Table', 'Working']) {
-        const toggle = page.getByRole('button', { name, exact: true }).first();
-        if (await toggle.isVisible()) await toggle.click();
-      }
+      await unfold(page, `${server.base}/${address}`);
       const { violations } = await new AxeBuilder({ page }).exclude('iframe').analyze();
       for (const { id, nodes } of violations) found.push(`${address} ${id}: ${nodes[0]?.html.slice(0, 160)}`);
       const wide = await page.evaluate('document.documentElement.scrollWidth - window.innerWidth');
@@ -63,3 +58,14 @@ describe.runIf(CHROMIUM !== null)('every page, by the automated rules of accessi
     await close();
   });
 });
+
+/** Opens an address and, where it has figures, the table and the working of the first. */
+async function unfold(page: Page, address: string): Promise<void> {
+  await page.goto(address);
+  const shown = STATIONS_SHOWN[address.split('/').at(-1) ?? ''] ?? /site/i;
+  await page.getByText(shown).first().waitFor();
+  for (const name of ['Table', 'Working']) {
+    const toggle = page.getByRole('button', { name, exact: true }).first();
+    if (await toggle.isVisible()) await toggle.click();
+  }
+}

@@ -121,7 +121,9 @@ describe.runIf(CHROMIUM !== null)('the whole job, from an empty database to a do
 });
 
 function station(page: Page, name: string): Locator {
-  return page.getByRole('navigation', { name: 'Stations of the plan' }).getByRole('link', { name: new RegExp(`^${name}`) });
+  return page
+    .getByRole('navigation', { name: 'Stations of the plan' })
+    .getByRole('link', { name: new RegExp(`^${name}`) });
 }
 
 function figure(page: Page): Promise<string | null> {

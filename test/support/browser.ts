@@ -81,7 +81,8 @@ export async function openPage(
   );
   page.on('pageerror', (error) => faults.push(error.message));
   page.on('console', (message) => {
-    if (message.type() === 'error' && /Content Security Policy|Uncaught/.test(message.text())) faults.push(message.text());
+    if (message.type() === 'error' && /Content Security Policy|Uncaught/.test(message.text()))
+      faults.push(message.text());
   });
   return { page, context, outside, faults, close: () => context.close() };
 }

@@ -31,19 +31,25 @@ export function BankSheet() {
           {
             value: bank.effectiveKvar,
             unit: 'kvar',
-            under: isTrial ? `kept: ${formatQuantity(kept.result.bank.effectiveKvar, 'kvar')}` : 'effective, all stages',
+            under: isTrial
+              ? `kept: ${formatQuantity(kept.result.bank.effectiveKvar, 'kvar')}`
+              : 'effective, all stages',
             id: 'bank.effectiveKvar',
           },
           { value: control.setPointPowerFactor, under: 'set point', digits: 'given' },
           {
             value: operation.totalSwitchings,
-            under: isTrial ? `switchings; kept: ${formatNumber(kept.result.operation.totalSwitchings, 'whole')}` : 'switchings',
+            under: isTrial
+              ? `switchings; kept: ${formatNumber(kept.result.operation.totalSwitchings, 'whole')}`
+              : 'switchings',
             digits: 'whole',
           },
           {
             value: operation.shareInTargetPct,
             unit: '%',
-            under: isTrial ? `in target; kept: ${formatQuantity(kept.result.operation.shareInTargetPct, '%')}` : 'of the record in target',
+            under: isTrial
+              ? `in target; kept: ${formatQuantity(kept.result.operation.shareInTargetPct, '%')}`
+              : 'of the record in target',
           },
         ]}
       >
@@ -79,11 +85,15 @@ function headline({ bank, operation, requirement }: Result): string {
   const known = operation.months.flatMap(({ month, powerFactorLagging }) =>
     powerFactorLagging === null ? [] : [{ month, factor: powerFactorLagging }],
   );
-  const lowest = known.reduce<(typeof known)[number] | null>((a, b) => (a === null || b.factor < a.factor ? b : a), null);
+  const lowest = known.reduce<(typeof known)[number] | null>(
+    (a, b) => (a === null || b.factor < a.factor ? b : a),
+    null,
+  );
   if (lowest === null) return `${stages} work through the record.`;
   const factor = formatNumber(lowest.factor);
   const missed = known.filter((month) => month.factor < requirement.targetPowerFactor * (1 - 1e-12)).length;
-  if (missed === 0) return `${stages} hold every month above ${target}. ${formatMonth(lowest.month)} comes nearest, at ${factor}.`;
+  if (missed === 0)
+    return `${stages} hold every month above ${target}. ${formatMonth(lowest.month)} comes nearest, at ${factor}.`;
   return `${stages} leave ${missed === known.length ? 'every month' : missed === 1 ? 'one month' : `${missed} months`} under ${target}; ${formatMonth(lowest.month)} by most, at ${factor}.`;
 }
 

@@ -34,10 +34,11 @@ export function RatioTable({ isWide = false }: { isWide?: boolean }) {
     <section className="section" aria-labelledby="ratios">
       <h2 id="ratios">The same stages at other reactor ratios</h2>
       <p className="caption">
-        {isWide ? 'Percentages are of the limit, in the worst corner.' : 'One row is one bank.'} Choose a row to put it in place.
+        {isWide ? 'Percentages are of the limit, in the worst corner.' : 'One row is one bank.'} Choose a row to put it
+        in place.
       </p>
       {/* biome-ignore lint/a11y/noNoninteractiveTabindex: a table that scrolls must be reached by keyboard */}
-      <div className="table" tabIndex={0} role="region" aria-label="Reactor ratios">
+      <section className="table" tabIndex={0} aria-label="Reactor ratios">
         <table>
           <thead>
             <tr>
@@ -77,7 +78,7 @@ export function RatioTable({ isWide = false }: { isWide?: boolean }) {
             ))}
           </tbody>
         </table>
-      </div>
+      </section>
       {rows.length === 0 ? <p className="caption">Judged once the hand rests.</p> : null}
     </section>
   );

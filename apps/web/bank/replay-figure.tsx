@@ -57,7 +57,10 @@ export function ReplayFigure({ replay }: { replay: DayReplay }) {
 }
 
 function intervalAt(replay: DayReplay, cursorS: number): number {
-  return Math.max(0, replay.atS.findLastIndex((s) => s <= cursorS));
+  return Math.max(
+    0,
+    replay.atS.findLastIndex((s) => s <= cursorS),
+  );
 }
 
 function ReplaySvg({ replay, width, at, words }: { replay: DayReplay; width: number; at: number; words: string }) {
@@ -70,7 +73,12 @@ function ReplaySvg({ replay, width, at, words }: { replay: DayReplay; width: num
   const rows = TOP + FIELD + 48;
   const height = rows + stages.length * ROW + 8;
   const stair = (values: readonly number[]) =>
-    atS.map((s, i) => `${i === 0 || s - atS[i - 1]! > intervalS ? 'M' : 'L'}${x(s).toFixed(1)} ${y(values[i]!).toFixed(1)}H${x(s + intervalS).toFixed(1)}`).join('');
+    atS
+      .map(
+        (s, i) =>
+          `${i === 0 || s - atS[i - 1]! > intervalS ? 'M' : 'L'}${x(s).toFixed(1)} ${y(values[i]!).toFixed(1)}H${x(s + intervalS).toFixed(1)}`,
+      )
+      .join('');
   const cursor = x((atS[at] ?? 0) + intervalS / 2);
   const hours = Array.from({ length: Math.floor(lengthS / 10_800) + 1 }, (_, k) => k * 10_800);
   return (

@@ -36,7 +36,12 @@ export function StageFields() {
               <GroupField key={one.part} {...one} at={at} group={group} change={change} />
             ))}
             <p className="row">
-              <button type="button" className="way" disabled={bank.stages.length === 1} onClick={() => change(at, null)}>
+              <button
+                type="button"
+                className="way"
+                disabled={bank.stages.length === 1}
+                onClick={() => change(at, null)}
+              >
                 Remove the group
               </button>
             </p>
@@ -76,7 +81,8 @@ function GroupField({
   const shown = text ?? formatNumber(value, 'working').replaceAll('\u00a0', ' ');
   const read = readTyped(shown, unit);
   const fault = 'fault' in read ? read.fault : null;
-  const take = (next: number) => change(at, { ...group, [part]: part === 'count' ? Math.max(1, Math.round(next)) : next });
+  const take = (next: number) =>
+    change(at, { ...group, [part]: part === 'count' ? Math.max(1, Math.round(next)) : next });
   const type = (typed: string) => {
     setText(typed);
     const now = readTyped(typed, unit);

@@ -80,27 +80,39 @@ function StageRow({ bank, effective, width, change }: RowProps) {
     return true;
   };
   return (
-    <svg width={width} height={HEIGHT} role="group" aria-label="Stages; arrow keys move one, Delete removes it, + adds one">
+    // biome-ignore lint/a11y/useSemanticElements: a drawing is no set of fields
+    <svg
+      width={width}
+      height={HEIGHT}
+      role="group"
+      aria-label="Stages; arrow keys move one, Delete removes it, + adds one"
+    >
       {stages.map((stage, at) => {
         const kvar = effective[at] ?? stage.ratedKvar;
         const held = drag?.at === at ? drag : null;
         return (
           <g
             key={at}
-            className={held === null ? 'stage moved' : 'stage'}
+            className={held === null ? 'moved' : undefined}
             transform={`translate(${at * pitch + (held?.dx ?? 0)} ${held?.dy ?? 0})`}
             opacity={held !== null && isOff ? 0.35 : 1}
-            role="button"
-            tabIndex={0}
-            aria-label={`Stage ${at + 1}, ${formatQuantity(kvar, 'kvar')}`}
-            onPointerDown={(event) => down(event, at)}
-            onPointerMove={move}
-            onPointerUp={up}
-            onKeyDown={(event) => {
-              if (press(event.key, at)) event.preventDefault();
-            }}
           >
-            <StageBlock {...{ at, pitch, kvar }} height={Math.max(26, (104 * kvar) / most)} rated={stage.ratedKvar} ratedV={stage.ratedV} />
+            {/* biome-ignore lint/a11y/useSemanticElements: a part of a drawing can be no button element */}
+            <g
+              className="stage"
+              role="button"
+              tabIndex={0}
+              aria-label={`Stage ${at + 1}, ${formatQuantity(kvar, 'kvar')}`}
+              onPointerDown={(event) => down(event, at)}
+              onPointerMove={move}
+              onPointerUp={up}
+              onKeyDown={(event) => {
+                if (press(event.key, at)) event.preventDefault();
+              }}
+            >
+              <StageBlock at={at} pitch={pitch} height={Math.max(26, (104 * kvar) / most)} />
+            </g>
+            <StageWords {...{ at, pitch, kvar }} rated={stage.ratedKvar} ratedV={stage.ratedV} />
           </g>
         );
       })}
@@ -109,29 +121,43 @@ function StageRow({ bank, effective, width, change }: RowProps) {
   );
 }
 
-function StageBlock({
+function StageBlock({ at, pitch, height }: { at: number; pitch: number; height: number }) {
+  const wide = blockWidth(pitch);
+  const top = FLOOR - height;
+  return (
+    <>
+      <rect
+        className={`stroke-bank ${at % 2 === 0 ? 'fill-wash' : 'fill-wash2'}`}
+        x={0.6}
+        y={top}
+        width={wide}
+        height={height}
+      />
+      {height < 44 ? null : <path className="stroke-bank" d={`M${wide / 2 - 7} ${top + 7}h14m-14 4h14m-14 4h14`} />}
+    </>
+  );
+}
+
+function blockWidth(pitch: number): number {
+  return pitch - Math.min(12, pitch / 5);
+}
+
+function StageWords({
   at,
   pitch,
   kvar,
-  height,
   rated,
   ratedV,
 }: {
   at: number;
   pitch: number;
   kvar: number;
-  height: number;
   rated: number;
   ratedV: number;
 }) {
-  const wide = pitch - Math.min(12, pitch / 5);
-  const middle = wide / 2;
+  const middle = blockWidth(pitch) / 2;
   return (
-    <>
-      <rect className={`stroke-bank ${at % 2 === 0 ? 'fill-wash' : 'fill-wash2'}`} x={0.6} y={FLOOR - height} width={wide} height={height} />
-      {height < 44 ? null : (
-        <path className="stroke-bank" d={`M${middle - 7} ${FLOOR - height + 7}h14m-14 4h14m-14 4h14`} />
-      )}
+    <g style={{ pointerEvents: 'none' }}>
       {pitch < 34 ? null : (
         <text className="bank" fontWeight="600" x={middle} y={FLOOR - 6} textAnchor="middle">
           {formatNumber(kvar)}
@@ -150,7 +176,7 @@ function StageBlock({
           </text>
         </>
       )}
-    </>
+    </g>
   );
 }
 

@@ -54,7 +54,8 @@ export class DeskLink {
 }
 
 /** What each question is answered with. */
-type AnswerOf<K extends string> = Extract<DeskAnswered, Record<K, unknown>>[K & keyof Extract<DeskAnswered, Record<K, unknown>>];
+type AnswerOf<K extends string> = Extract<DeskAnswered, Record<K, unknown>>[K &
+  keyof Extract<DeskAnswered, Record<K, unknown>>];
 interface Answers {
   opened: AnswerOf<'opened'>;
   look: AnswerOf<'look'>;

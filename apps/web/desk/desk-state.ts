@@ -115,7 +115,9 @@ export function staleFrom(state: DeskState): Station | null {
   const frozen = kept.inputs.site;
   const differs = (key: string) => JSON.stringify(canonical(frozen[key])) !== JSON.stringify(canonical(document[key]));
   for (const [station, keys] of STATION_KEYS) {
-    if (keys.some((key) => (key === 'bank' ? trial !== null || (kept.kind === 'assess' && differs(key)) : differs(key)))) {
+    if (
+      keys.some((key) => (key === 'bank' ? trial !== null || (kept.kind === 'assess' && differs(key)) : differs(key)))
+    ) {
       return station;
     }
   }

@@ -47,7 +47,10 @@ export class EngineDesk {
       this.#pending = { ...asked, depth: 'quick' };
       void this.#follow();
     }
-    this.#rest = setTimeout(() => void this.#lookOnce(this.#far, { ...asked, depth: 'full' }), isFullOnly ? 0 : REST_MS);
+    this.#rest = setTimeout(
+      () => void this.#lookOnce(this.#far, { ...asked, depth: 'full' }),
+      isFullOnly ? 0 : REST_MS,
+    );
   }
 
   /** @returns the same stages at other reactor ratios */

@@ -1,7 +1,6 @@
 import {
   type Bank,
   bankLevels,
-  basisOf,
   type Duty,
   judge,
   type Outcome,

@@ -3,6 +3,7 @@ import type { Station } from '../address.js';
 import { ask, NoConnection, Refused } from '../api/ask.js';
 import type { RecordShown, RevisionHeadShown, RevisionShown, SiteDocument, SiteShown } from '../api/shown.js';
 import { withValueAt } from '../field/document-path.js';
+import { clockNow } from './clock-now.js';
 import { InputRefused } from './desk-link.js';
 import { type DeskState, isChanged, NOTHING_YET, studiedDocument } from './desk-state.js';
 import { dropDraft, keepDraft, readDraft } from './draft.js';
@@ -109,7 +110,10 @@ export class SiteDesk {
     try {
       if (isChanged(this.#state)) await this.#save(kind);
       const way = kind === 'plan' ? 'plans' : 'assessments';
-      const { body } = await ask<RevisionShown | { id: number }>(`${this.#path()}/${way}`, { method: 'POST', json: {} });
+      const { body } = await ask<RevisionShown | { id: number }>(`${this.#path()}/${way}`, {
+        method: 'POST',
+        json: {},
+      });
       this.#set({ offlineSince: null });
       if ('contentHash' in body) await this.#kept();
       else this.#follow(body.id);
@@ -145,12 +149,6 @@ export class SiteDesk {
     if (whose === 'theirs') dropDraft(this.siteId);
     const own = whose === 'mine' ? document : theirs.site;
     this.#set({ site: theirs, document: own, theirs: null, ...(whose === 'theirs' ? { trial: null, typed: {} } : {}) });
-    this.#edited();
-  }
-
-  /** Takes a part of the site file as a whole, as a choice of a list does. */
-  replaceDocument(document: SiteDocument): void {
-    this.#set({ document });
     this.#edited();
   }
 
@@ -217,7 +215,8 @@ export class SiteDesk {
 
   async #ended(end: JobEnd): Promise<void> {
     this.#set({ job: null });
-    if (end.state === 'failed' && end.error !== null) this.#set({ problems: end.error.problems, fault: end.error.detail });
+    if (end.state === 'failed' && end.error !== null)
+      this.#set({ problems: end.error.problems, fault: end.error.detail });
     if (end.state === 'done') await this.#kept().catch((error) => this.#hear(error));
   }
 
@@ -268,7 +267,6 @@ export class SiteDesk {
       fault: null,
       problems: [],
       ...(asked.depth === 'quick' ? { followedMs: tookMs } : {}),
-
     });
   }
 
@@ -301,9 +299,4 @@ export class SiteDesk {
     this.#state = { ...this.#state, ...part };
     for (const listener of this.#listeners) listener();
   }
-}
-
-function clockNow(): string {
-  const now = new Date();
-  return `${String(now.getHours()).padStart(2, '0')}:${String(now.getMinutes()).padStart(2, '0')}`;
 }

@@ -31,12 +31,7 @@ const COLUMNS = 1400;
  * @param picks what the reader picked
  * @param sweep need over the target
  */
-export function stationCharts(
-  looked: Looked,
-  station: Station,
-  picks: Picks,
-  sweep: () => TargetSweep,
-): StationCharts {
+export function stationCharts(looked: Looked, station: Station, picks: Picks, sweep: () => TargetSweep): StationCharts {
   switch (station) {
     case 'record':
       return { record: { year: recordYear(looked.study) } };
@@ -120,7 +115,10 @@ function bankCharts({ outcome, study }: Looked, picks: Picks): NonNullable<Stati
   const replay = dayReplay(outcome, study, momentS);
   const beginS = dayBeginS(outcome.zone, momentS);
   const { beginS: column, busKw, busKvar, connectedKvar } = outcome.series;
-  const at = Math.max(0, column.findLastIndex((s) => s <= beginS + picks.cursorS));
+  const at = Math.max(
+    0,
+    column.findLastIndex((s) => s <= beginS + picks.cursorS),
+  );
   const moment = { beginS: column[at]!, kw: busKw[at]!, loadKvar: busKvar[at]!, bankKvar: connectedKvar[at]! };
   return {
     replay,
@@ -163,7 +161,12 @@ function networkCharts(outcome: Outcome, picks: Picks): NonNullable<StationChart
   return {
     impedance: explained(figure.chart(scale, levelKvar), line),
     margins,
-    rival: { name, verdict, impedance: explained(second.chart(scale), 'all stages in'), margins: marginMap(other, name) },
+    rival: {
+      name,
+      verdict,
+      impedance: explained(second.chart(scale), 'all stages in'),
+      margins: marginMap(other, name),
+    },
     duties,
     levelsKvar,
   };
@@ -180,4 +183,3 @@ function thinned(chart: Chart): Chart {
   });
   return { ...chart, series };
 }
-

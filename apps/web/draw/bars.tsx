@@ -4,12 +4,24 @@ import { ChartFigure } from './chart-figure.js';
 import { usePlotWidth } from './plot-size.js';
 
 /** Bars on one scale as a figure; with verdicts, each bar is filled by its own. */
-export function Bars({ figure, working, isWide = false }: { figure: BarFigure; working?: readonly string[]; isWide?: boolean }) {
+export function Bars({
+  figure,
+  working,
+  isWide = false,
+}: {
+  figure: BarFigure;
+  working?: readonly string[];
+  isWide?: boolean;
+}) {
   const [place, width] = usePlotWidth();
   return (
     <ChartFigure figure={figure} working={working}>
       <div ref={place}>
-        {width === 0 ? null : isWide ? <DutySvg figure={figure} width={width} /> : <NarrowSvg figure={figure} width={width} />}
+        {width === 0 ? null : isWide ? (
+          <DutySvg figure={figure} width={width} />
+        ) : (
+          <NarrowSvg figure={figure} width={width} />
+        )}
       </div>
     </ChartFigure>
   );
@@ -90,11 +102,26 @@ function DutySvg({ figure, width }: { figure: BarFigure; width: number }) {
   );
 }
 
-function DutyRow({ bar, hatch, width, scale, to, y }: { bar: Bar; hatch: string; width: number; scale: number; to: number; y: number }) {
+function DutyRow({
+  bar,
+  hatch,
+  width,
+  scale,
+  to,
+  y,
+}: {
+  bar: Bar;
+  hatch: string;
+  width: number;
+  scale: number;
+  to: number;
+  y: number;
+}) {
   const isBroken = bar.value > to;
   const end = Math.min(bar.value, to) * scale;
   const fill = bar.verdict === 'watch' ? `url(#${hatch})` : undefined;
-  const look = bar.verdict === 'avoid' ? 'fill-avoid' : bar.verdict === 'watch' ? 'stroke-watch' : 'fill-mid stroke-ink';
+  const look =
+    bar.verdict === 'avoid' ? 'fill-avoid' : bar.verdict === 'watch' ? 'stroke-watch' : 'fill-mid stroke-ink';
   return (
     <g>
       <text className="halo" x={0} y={y + 12}>

@@ -5,8 +5,16 @@ import { type PlotBox, textWidth } from './plot-box.js';
 export function ChartAxes({ chart, box }: { chart: Chart; box: PlotBox }) {
   if (chart.equalScales) return <TopAxis chart={chart} box={box} />;
   const zero = chart.y.scale === 'linear' && chart.y.from <= 0 ? 0 : chart.y.from;
-  const rows = spaced(chart.y.ticks, (tick) => box.y(tick.at), () => 14);
-  const columns = spaced(chart.x.ticks, (tick) => box.x(tick.at), (tick) => textWidth(tick.text) + 6);
+  const rows = spaced(
+    chart.y.ticks,
+    (tick) => box.y(tick.at),
+    () => 14,
+  );
+  const columns = spaced(
+    chart.x.ticks,
+    (tick) => box.x(tick.at),
+    (tick) => textWidth(tick.text) + 6,
+  );
   const hasOrders = chart.x.ticks.some(({ strong }) => strong !== undefined);
   return (
     <g>

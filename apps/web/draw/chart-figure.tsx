@@ -44,7 +44,9 @@ export function ChartFigure({
         </span>
       </div>
       <p className="caption">{figure.caption}</p>
-      {open === 'save' ? <SaveWays figure={figure} picture={picture ?? (() => svgOf(plot.current, figure.finding))} /> : null}
+      {open === 'save' ? (
+        <SaveWays figure={figure} picture={picture ?? (() => svgOf(plot.current, figure.finding))} />
+      ) : null}
       <div className="plot" ref={plot}>
         <p className="hidden">{figure.sentence}</p>
         {children}
@@ -70,14 +72,14 @@ function Toggle({ name, isOpen, onClick }: { name: string; isOpen: boolean; onCl
 function SaveWays({ figure, picture }: { figure: Figured; picture: () => string }) {
   return (
     <p className="row">
+      <button type="button" className="way" onClick={() => saveText(`${figure.id}.svg`, 'image/svg+xml', picture())}>
+        Save as SVG
+      </button>
       <button
         type="button"
         className="way"
-        onClick={() => saveText(`${figure.id}.svg`, 'image/svg+xml', picture())}
+        onClick={() => saveText(`${figure.id}.csv`, 'text/csv', csvOf(figure.table))}
       >
-        Save as SVG
-      </button>
-      <button type="button" className="way" onClick={() => saveText(`${figure.id}.csv`, 'text/csv', csvOf(figure.table))}>
         Save as CSV
       </button>
     </p>

@@ -78,9 +78,17 @@ function Label({ mark, box }: { mark: Of<'label'>; box: PlotBox }) {
   const dx = side === 'right' ? 8 : side === 'left' ? -8 : 0;
   const dy = side === 'above' ? -8 : side === 'below' ? 16 : 4;
   const anchor = side === 'right' ? 'start' : side === 'left' ? 'end' : 'middle';
-  const x = Math.min(Math.max(box.x(mark.x) + dx, box.left), box.width - (anchor === 'middle' ? textWidth(text) / 2 : 0));
+  const x = Math.min(
+    Math.max(box.x(mark.x) + dx, box.left),
+    box.width - (anchor === 'middle' ? textWidth(text) / 2 : 0),
+  );
   return (
-    <text className={part === 'bank' ? 'bank' : part === 'beyond' ? 'axis' : ''} x={x} y={box.y(mark.y) + dy} textAnchor={anchor}>
+    <text
+      className={part === 'bank' ? 'bank' : part === 'beyond' ? 'axis' : ''}
+      x={x}
+      y={box.y(mark.y) + dy}
+      textAnchor={anchor}
+    >
       {text}
     </text>
   );
@@ -114,28 +122,34 @@ function PointWords({ marks, box }: { marks: Point[]; box: PlotBox }) {
   return (
     <g>
       {rows.map((mark) => {
-        const [x, y] = [box.x(mark.x), box.y(mark.y)];
-        if (mark.side !== 'right') {
-          const isOut = x - 10 - textWidth(mark.text!) < 0;
-          return (
-            <text key={mark.text} className="halo" x={isOut ? x + 10 : x - 10} y={y - 6} textAnchor={isOut ? 'start' : 'end'}>
-              {mark.text}
-            </text>
-          );
-        }
-        const at = Math.max(y - 4, lowest + 16);
-        lowest = at;
-        const isOut = x + 28 + textWidth(mark.text!) > box.width;
-        const far = isOut ? x - 26 : x + 26;
-        return (
-          <g key={mark.text}>
-            <path className="stroke-soft" strokeWidth="0.8" d={`M${x + (isOut ? -5 : 5)} ${y}L${far} ${at}`} />
-            <text className="halo" x={isOut ? far - 3 : far + 3} y={at + 4} textAnchor={isOut ? 'end' : 'start'}>
-              {mark.text}
-            </text>
-          </g>
-        );
+        if (mark.side !== 'right') return <BesideWords key={mark.text} mark={mark} box={box} />;
+        lowest = Math.max(box.y(mark.y) - 4, lowest + 16);
+        return <LedWords key={mark.text} mark={mark} box={box} at={lowest} />;
       })}
+    </g>
+  );
+}
+
+function BesideWords({ mark, box }: { mark: Point; box: PlotBox }) {
+  const x = box.x(mark.x);
+  const isOut = x - 10 - textWidth(mark.text!) < 0;
+  return (
+    <text className="halo" x={isOut ? x + 10 : x - 10} y={box.y(mark.y) - 6} textAnchor={isOut ? 'start' : 'end'}>
+      {mark.text}
+    </text>
+  );
+}
+
+function LedWords({ mark, box, at }: { mark: Point; box: PlotBox; at: number }) {
+  const [x, y] = [box.x(mark.x), box.y(mark.y)];
+  const isOut = x + 28 + textWidth(mark.text!) > box.width;
+  const far = isOut ? x - 26 : x + 26;
+  return (
+    <g>
+      <path className="stroke-soft" strokeWidth="0.8" d={`M${x + (isOut ? -5 : 5)} ${y}L${far} ${at}`} />
+      <text className="halo" x={isOut ? far - 3 : far + 3} y={at + 4} textAnchor={isOut ? 'end' : 'start'}>
+        {mark.text}
+      </text>
     </g>
   );
 }

@@ -34,7 +34,8 @@ export function plotBox(chart: Chart, width: number, height: number): PlotBox {
   const inner = chart.equalScales ? (span * (chart.y.to - chart.y.from)) / (chart.x.to - chart.x.from) : 0;
   const whole = chart.equalScales ? Math.round(inner + top + 12) : height;
   const bottom = whole - (chart.equalScales ? 6 : chart.x.label === '' ? 24 : 40);
-  const place = (axis: Axis, from: number, to: number) => (value: number) => from + placeOnAxis(axis, value) * (to - from);
+  const place = (axis: Axis, from: number, to: number) => (value: number) =>
+    from + placeOnAxis(axis, value) * (to - from);
   return {
     ...{ width, height: whole, left, right, top, bottom },
     x: place(chart.x, left, right),
@@ -63,7 +64,12 @@ export function linePath(box: PlotBox, xs: ArrayLike<number>, ys: ArrayLike<numb
 /** The path of a filled stretch between a row of points and its base. */
 export function washPath(
   box: PlotBox,
-  { x: xs, y: ys, base, isStair }: { x: ArrayLike<number>; y: ArrayLike<number>; base?: ArrayLike<number>; isStair: boolean },
+  {
+    x: xs,
+    y: ys,
+    base,
+    isStair,
+  }: { x: ArrayLike<number>; y: ArrayLike<number>; base?: ArrayLike<number>; isStair: boolean },
 ): string {
   const paths: string[] = [];
   let from = 0;

@@ -18,7 +18,9 @@ export function Plot({
   const [place, width] = usePlotWidth();
   return (
     <ChartFigure figure={chart} working={working}>
-      <div ref={place} className={chart.equalScales ? 'square' : undefined}>{width === 0 ? null : <ChartSvg chart={chart} width={width} height={height} styles={styles} />}</div>
+      <div ref={place} className={chart.equalScales ? 'square' : undefined}>
+        {width === 0 ? null : <ChartSvg chart={chart} width={width} height={height} styles={styles} />}
+      </div>
     </ChartFigure>
   );
 }

@@ -6,7 +6,12 @@ export function Quantity({ value, unit = '', digits }: { value: number | null; u
   return (
     <span className="num nowrap">
       <b>{formatNumber(value, digits)}</b>
-      {unit === '' ? null : <span className="unit">{'\u00a0'}{unit}</span>}
+      {unit === '' ? null : (
+        <span className="unit">
+          {'\u00a0'}
+          {unit}
+        </span>
+      )}
     </span>
   );
 }

@@ -12,12 +12,27 @@ export function saveText(name: string, type: string, text: string): void {
 
 /** A table as CSV for any program: plain numbers without gaps, a true minus as a hyphen. */
 export function csvOf({ columns, rows }: ChartTable): string {
-  const plain = (text: string) => text.replace(/(?<=\d)\u00a0(?=\d{3})/g, '').replaceAll('\u2212', '-').replaceAll('\u00a0', ' ');
+  const plain = (text: string) =>
+    text
+      .replace(/(?<=\d)\u00a0(?=\d{3})/g, '')
+      .replaceAll('\u2212', '-')
+      .replaceAll('\u00a0', ' ');
   const cell = (text: string) => (/[",\n]/.test(text) ? `"${text.replaceAll('"', '""')}"` : text);
-  return [columns.map(({ head }) => head), ...rows].map((row) => row.map((text) => cell(plain(text))).join(',')).join('\n');
+  return [columns.map(({ head }) => head), ...rows]
+    .map((row) => row.map((text) => cell(plain(text))).join(','))
+    .join('\n');
 }
 
-const DRAWN = ['fill', 'stroke', 'stroke-width', 'stroke-dasharray', 'font-family', 'font-size', 'font-weight', 'opacity'];
+const DRAWN = [
+  'fill',
+  'stroke',
+  'stroke-width',
+  'stroke-dasharray',
+  'font-family',
+  'font-size',
+  'font-weight',
+  'opacity',
+];
 
 /** The drawing of a figure as a file of its own: what the style sheet gave it is written into it. */
 export function svgOf(plot: HTMLElement | null, title: string): string {

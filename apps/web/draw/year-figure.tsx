@@ -38,8 +38,6 @@ function YearSvg({ map, width, onDay }: { map: YearMap; width: number; onDay: ((
   const height = bottom + 42 + (fits ? map.table.columns.length * 20 - 12 : 0);
   const steps = [...new Set(map.cells)].sort((a, b) => a - b);
   return (
-    // biome-ignore lint/a11y/noStaticElementInteractions: a shortcut to the day field beside it, which has keyboard reach
-    // biome-ignore lint/a11y/useKeyWithClickEvents: see above
     <svg
       width={width}
       height={height}

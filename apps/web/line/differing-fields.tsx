@@ -61,6 +61,7 @@ export function differences(mine: unknown, theirs: unknown, path = ''): [string,
     });
   }
   if (JSON.stringify(mine) === JSON.stringify(theirs)) return [];
-  const text = (value: unknown) => (value === undefined ? 'nothing' : isPart(value) ? JSON.stringify(value) : String(value));
+  const text = (value: unknown) =>
+    value === undefined ? 'nothing' : isPart(value) ? JSON.stringify(value) : String(value);
   return [[path, text(mine), text(theirs)]];
 }

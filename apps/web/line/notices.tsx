@@ -29,8 +29,8 @@ export function Notices() {
       ))}
       {problems.length === general.length ? null : (
         <p className="notice" role="alert">
-          Refused at {[...new Set(problems.map(({ path }) => path ?? ''))].filter(Boolean).join(', ')}. The figures below are
-          those from before.
+          Refused at {[...new Set(problems.map(({ path }) => path ?? ''))].filter(Boolean).join(', ')}. The figures
+          below are those from before.
         </p>
       )}
       {Object.keys(typed).length === 0 ? null : (

@@ -35,7 +35,9 @@ export function OpenPoints({ siteId }: { siteId: string }) {
           <span className="deciding">
             {points.length} open {points.length === 1 ? 'point' : 'points'}
           </span>
-          <span className="third caption">{most > 0 ? `${deciding} could change the verdict` : 'effects not computed yet'}</span>
+          <span className="third caption">
+            {most > 0 ? `${deciding} could change the verdict` : 'effects not computed yet'}
+          </span>
         </div>
         <button
           type="button"
@@ -48,14 +50,14 @@ export function OpenPoints({ siteId }: { siteId: string }) {
         </button>
       </div>
       <div className={isUnfolded ? 'points unfolded' : 'points'}>
-          <p className="caption">
-            {most > 0 ? 'In order of how far each moves the result.' : 'Findings first, then what was assumed.'} Open one to
-            settle it where it is entered.
-          </p>
-          <ul>
-            {points.map((point) => (
-              <PointRow key={point.key} point={point} most={most} siteId={siteId} />
-            ))}
+        <p className="caption">
+          {most > 0 ? 'In order of how far each moves the result.' : 'Findings first, then what was assumed.'} Open one
+          to settle it where it is entered.
+        </p>
+        <ul>
+          {points.map((point) => (
+            <PointRow key={point.key} point={point} most={most} siteId={siteId} />
+          ))}
         </ul>
       </div>
     </aside>

@@ -15,7 +15,9 @@ const SHEETS: Record<Station, React.LazyExoticComponent<() => ReactNode>> = {
   bank: lazy(() => import('../bank/bank-sheet.js').then(({ BankSheet }) => ({ default: BankSheet }))),
   network: lazy(() => import('../network/network-sheet.js').then(({ NetworkSheet }) => ({ default: NetworkSheet }))),
   money: lazy(() => import('../money/money-sheet.js').then(({ MoneySheet }) => ({ default: MoneySheet }))),
-  proposal: lazy(() => import('../proposal/proposal-sheet.js').then(({ ProposalSheet }) => ({ default: ProposalSheet }))),
+  proposal: lazy(() =>
+    import('../proposal/proposal-sheet.js').then(({ ProposalSheet }) => ({ default: ProposalSheet })),
+  ),
 };
 
 type SiteAddress = Extract<Address, { page: 'site' }>;
@@ -139,7 +141,12 @@ function KeepWays() {
         </button>
       )}
       {isChanged(state) && Object.keys(state.typed).length === 0 ? (
-        <button type="button" className="button filled" disabled={isBusy} onClick={() => void desk.keep(keepKind(state))}>
+        <button
+          type="button"
+          className="button filled"
+          disabled={isBusy}
+          onClick={() => void desk.keep(keepKind(state))}
+        >
           Compute and keep
         </button>
       ) : null}

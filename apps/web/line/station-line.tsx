@@ -46,14 +46,17 @@ export function StationLine({ siteId, open }: { siteId: string; open: Station })
 function Segment({ station }: { station: Station }) {
   const { state } = useDesk();
   const at = STATIONS.indexOf(station);
-  const refused = state.problems.flatMap(({ path }) => (path === undefined ? [] : [STATIONS.indexOf(stationOfPath(path))]));
+  const refused = state.problems.flatMap(({ path }) =>
+    path === undefined ? [] : [STATIONS.indexOf(stationOfPath(path))],
+  );
   if (refused.length > 0 && at >= Math.min(...refused)) return <span className="segment broken" />;
   if (state.job !== null) {
     const done = Math.max(0, Math.min(1, state.job.progress * STATIONS.length - at));
     return <span className="segment filling" style={{ '--done': `${100 * done}%` } as React.CSSProperties} />;
   }
   const stale = staleFrom(state);
-  const isHollow = state.kept === null ? at > 0 && state.records.length === 0 : stale !== null && at >= STATIONS.indexOf(stale);
+  const isHollow =
+    state.kept === null ? at > 0 && state.records.length === 0 : stale !== null && at >= STATIONS.indexOf(stale);
   return <span className={isHollow ? 'segment hollow' : 'segment'} />;
 }
 
@@ -109,7 +112,9 @@ const FIGURES: Record<Station, (state: DeskState) => { figure: ReactNode; third:
   },
   money: (state) => {
     const money: unknown = latestResult(state)?.money ?? null;
-    return money === null ? { figure: 'not priced', third: 'no tariff entered' } : { figure: <b>priced</b>, third: 'see the station' };
+    return money === null
+      ? { figure: 'not priced', third: 'no tariff entered' }
+      : { figure: <b>priced</b>, third: 'see the station' };
   },
   proposal: ({ kept }) =>
     kept === null

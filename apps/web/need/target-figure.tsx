@@ -63,13 +63,7 @@ function Handle({ box, x, text }: { box: ReturnType<typeof plotBox>; x: number; 
       <rect className="fill-sheet" x={x - 20} y={box.bottom + 2} width={40} height={22} />
       <path className="fill-ink" d={`M${x} ${box.bottom + 1}l8 6v20h-16v-20Z`} />
       <path stroke="var(--sheet)" strokeWidth="1.4" d={`M${x - 3} ${box.bottom + 12}h6m-6 4h6m-6 4h6`} />
-      <rect
-        className="fill-sheet"
-        x={isRight ? x - 86 : x + 12}
-        y={box.bottom + 24}
-        width={74}
-        height={18}
-      />
+      <rect className="fill-sheet" x={isRight ? x - 86 : x + 12} y={box.bottom + 24} width={74} height={18} />
       <text x={isRight ? x - 14 : x + 14} y={box.bottom + 38} textAnchor={isRight ? 'end' : 'start'}>
         target <tspan fontWeight="600">{text}</tspan>
       </text>

@@ -14,17 +14,20 @@ const FILLS: Record<CellFill, { fill: string; ink: string }> = {
 /** A margin map as a picture of its own, for a file. */
 export function marginPicture(chart: Chart): string {
   const { columns, rows } = chart.table;
-  const text = (x: number, y: number, words: string, ink = '#14202b', anchor = 'middle') =>
-    `<text x="${x}" y="${y}" fill="${ink}" text-anchor="${anchor}">${escaped(words)}</text>`;
+  const text = (x: number, y: number, words: string, ink = '#14202b') =>
+    `<text x="${x}" y="${y}" fill="${ink}" text-anchor="${x < LEFT ? 'end' : 'middle'}">${escaped(words)}</text>`;
   const heads = columns.map(({ head }, at) =>
-    at === 0 ? text(LEFT - 8, 14, head, '#505e69', 'end') : text(LEFT + (at - 0.5) * WIDE, 14, head),
+    at === 0 ? text(LEFT - 8, 14, head, '#505e69') : text(LEFT + (at - 0.5) * WIDE, 14, head),
   );
-  const names = rows.map((row, at) => text(LEFT - 8, 20 + at * HIGH + 13, row[0] ?? '', '#505e69', 'end'));
+  const names = rows.map((row, at) => text(LEFT - 8, 20 + at * HIGH + 13, row[0] ?? '', '#505e69'));
   const cells = chart.marks.map((mark) => {
     if (mark.kind !== 'cell') return '';
     const { fill, ink } = FILLS[mark.fill];
     const [x, y] = [LEFT + mark.column * WIDE, 20 + mark.row * HIGH];
-    const plate = mark.fill === 'hatch' ? `<rect x="${x + 10}" y="${y + 2}" width="${WIDE - 20}" height="${HIGH - 4}" fill="#ffffff"/>` : '';
+    const plate =
+      mark.fill === 'hatch'
+        ? `<rect x="${x + 10}" y="${y + 2}" width="${WIDE - 20}" height="${HIGH - 4}" fill="#ffffff"/>`
+        : '';
     const box = `<rect x="${x}" y="${y}" width="${WIDE}" height="${HIGH}" fill="${fill}" stroke="#c3cccb" stroke-width="0.6"/>`;
     return `${box}${plate}${text(x + WIDE / 2, y + 13, mark.text, ink)}`;
   });

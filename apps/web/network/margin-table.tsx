@@ -15,7 +15,7 @@ export function MarginTable({ chart, isPickable = false }: { chart: Chart; isPic
   return (
     <ChartFigure figure={chart} steps={false} picture={() => marginPicture(chart)}>
       {/* biome-ignore lint/a11y/noNoninteractiveTabindex: a table that scrolls must be reached by keyboard */}
-      <div className="map" tabIndex={0} role="region" aria-label={chart.finding}>
+      <section className="map" tabIndex={0} aria-label={`Map: ${chart.finding}`}>
         <table>
           <thead>
             <tr>
@@ -51,7 +51,7 @@ export function MarginTable({ chart, isPickable = false }: { chart: Chart; isPic
             ))}
           </tbody>
         </table>
-      </div>
+      </section>
       <MapLegend />
     </ChartFigure>
   );
@@ -59,7 +59,10 @@ export function MarginTable({ chart, isPickable = false }: { chart: Chart; isPic
 
 function pickedRow(levels: readonly number[], levelKvar: number | null): number {
   if (levelKvar === null) return 0;
-  return Math.max(0, levels.findIndex((kvar) => kvar <= levelKvar + 1e-6));
+  return Math.max(
+    0,
+    levels.findIndex((kvar) => kvar <= levelKvar + 1e-6),
+  );
 }
 
 function MapLegend() {

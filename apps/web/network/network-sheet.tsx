@@ -20,14 +20,21 @@ export function NetworkSheet() {
   if (result === null) return <h1>The network is being judged</h1>;
   const worst = Math.max(...result.network.levels.map(({ voltageDistortionPct }) => voltageDistortionPct));
   const without = Math.max(
-    ...result.network.levels.filter(({ levelKvar }) => levelKvar < 1e-6).map(({ voltageDistortionPct }) => voltageDistortionPct),
+    ...result.network.levels
+      .filter(({ levelKvar }) => levelKvar < 1e-6)
+      .map(({ voltageDistortionPct }) => voltageDistortionPct),
   );
   const peak = result.network.levels.findLast((level) => level.case === 'nominal')?.parallelOrderH ?? null;
   return (
     <>
       <Headline
         figures={[
-          { value: result.network.shortCircuitMva, unit: 'MVA', under: 'fault level at the bus', id: 'network.shortCircuitMva' },
+          {
+            value: result.network.shortCircuitMva,
+            unit: 'MVA',
+            under: 'fault level at the bus',
+            id: 'network.shortCircuitMva',
+          },
           { value: peak, under: 'parallel resonance, all stages in', id: 'network.parallelOrderClosedFormH' },
           { value: worst, unit: '%', under: 'distortion, worst case' },
           { value: without, unit: '%', under: 'with no bank' },
@@ -65,7 +72,8 @@ function headline({ verdict, bank, duties }: Result, charts: StationCharts['netw
   const over = duties.filter((duty) => duty.verdict === 'avoid').length;
   const rival = charts?.rival ?? null;
   const other = rival === null ? '' : rivalWords(rival);
-  if (bank.stages.length === 0) return `Without a bank the network stands as it is${over === 0 ? '.' : `; ${over} limits are exceeded already.`}`;
+  if (bank.stages.length === 0)
+    return `Without a bank the network stands as it is${over === 0 ? '.' : `; ${over} limits are exceeded already.`}`;
   if (verdict === 'clear') return `At all ${levels} and in every corner the bank stays within its limits.${other}`;
   if (verdict === 'watch') return `No limit is passed at any of ${levels}; at least one is near.${other}`;
   return `${over === 1 ? 'One limit is' : `${formatNumber(over, 'given')} limits are`} passed by this bank.${other}`;

@@ -16,12 +16,16 @@ export function ProposalSheet() {
       <>
         <h1>No proposal yet</h1>
         <p className="row gap">
-          A proposal is made with each plan.{' '}
-          {records.length === 0 ? 'A meter record is needed first.' : null}
+          A proposal is made with each plan. {records.length === 0 ? 'A meter record is needed first.' : null}
         </p>
         {records.length === 0 ? null : (
           <p className="row gap">
-            <button type="button" className="button" disabled={job !== null || saving} onClick={() => void desk.keep('plan')}>
+            <button
+              type="button"
+              className="button"
+              disabled={job !== null || saving}
+              onClick={() => void desk.keep('plan')}
+            >
               Design a bank
             </button>
           </p>
@@ -42,7 +46,9 @@ export function ProposalSheet() {
         {kept.kind === 'plan' ? 'Proposed' : 'Judged'}: {proposed}
       </Headline>
       {isOlder ? (
-        <p className="notice">The inputs have changed since this paper was made. Compute and keep makes the next one.</p>
+        <p className="notice">
+          The inputs have changed since this paper was made. Compute and keep makes the next one.
+        </p>
       ) : null}
       <section className="section" aria-labelledby="paper">
         <h2 id="paper">
@@ -60,7 +66,11 @@ export function ProposalSheet() {
             Open it beside this page
           </a>
         </p>
-        <iframe className="paper no-print" src={`${links.proposal}#toolbar=0&view=FitH`} title={`Proposal ${number}, revision ${revision}`} />
+        <iframe
+          className="paper no-print"
+          src={`${links.proposal}#toolbar=0&view=FitH`}
+          title={`Proposal ${number}, revision ${revision}`}
+        />
       </section>
       <FindingsList />
       <Changes revisions={revisions} />

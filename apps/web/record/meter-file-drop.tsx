@@ -21,14 +21,12 @@ export function MeterFileDrop() {
     setRefusals([]);
     setQuestions([]);
     try {
-      const options: Record<string, string> =
-        Object.keys(answers).length === 0 ? {} : { map: JSON.stringify(answers) };
+      const options: Record<string, string> = Object.keys(answers).length === 0 ? {} : { map: JSON.stringify(answers) };
       await desk.upload(chosen, options);
     } catch (error) {
-      if (error instanceof Refused) {
-        setQuestions(error.problem.questions ?? []);
-        if (error.problem.questions === undefined) setRefusals(refusalWords(error));
-      } else setRefusals([error instanceof NoConnection ? 'No connection. Drop the file again when it is back.' : String(error)]);
+      const asked = error instanceof Refused ? (error.problem.questions ?? []) : [];
+      setQuestions(asked);
+      if (asked.length === 0) setRefusals(refusalWords(error));
     }
     setReading(false);
   };
@@ -41,7 +39,6 @@ export function MeterFileDrop() {
   return (
     <section className="section" aria-labelledby="drop">
       <h2 id="drop">{state.records.length === 0 ? 'The meter file' : 'Another meter file'}</h2>
-      {/* biome-ignore lint/a11y/noLabelWithoutControl: the control stands inside */}
       <label
         className={isOver ? 'drop over' : 'drop'}
         onDragOver={(event) => {
@@ -51,7 +48,8 @@ export function MeterFileDrop() {
         onDragLeave={() => setOver(false)}
         onDrop={drop}
       >
-        Drop it here, or choose it. Time, active and reactive power or energy, in any of the usual spellings; NEM12 as well.
+        Drop it here, or choose it. Time, active and reactive power or energy, in any of the usual spellings; NEM12 as
+        well.
         <br />
         <input
           type="file"
@@ -83,7 +81,9 @@ export function MeterFileDrop() {
   );
 }
 
-function refusalWords(error: Refused): string[] {
+function refusalWords(error: unknown): string[] {
+  if (error instanceof NoConnection) return ['No connection. Drop the file again when it is back.'];
+  if (!(error instanceof Refused)) return [String(error)];
   const { problems, detail } = error.problem;
   if (problems.length === 0) return [detail];
   return problems.slice(0, 12).map(({ row, column, expected, found }) => {
@@ -118,7 +118,10 @@ function AskedInPlace({ question, onAnswer }: { question: QuestionAsked; onAnswe
 
 function mapWords(map: object): string {
   return Object.entries(map)
-    .map(([name, value]) => `${spaced(name)}: ${typeof value === 'object' ? JSON.stringify(value) : spaced(String(value))}`)
+    .map(
+      ([name, value]) =>
+        `${spaced(name)}: ${typeof value === 'object' ? JSON.stringify(value) : spaced(String(value))}`,
+    )
     .join(', ');
 }
 

@@ -31,7 +31,7 @@ export function ReadingFindings({ record }: { record: RecordShown }) {
       <section className="section" aria-labelledby="reading">
         <h2 id="reading">The reading is {GRADES[quality.grade]}</h2>
         {/* biome-ignore lint/a11y/noNoninteractiveTabindex: a table that scrolls must be reached by keyboard */}
-        <div className="table" tabIndex={0} role="region" aria-label="The reading">
+        <section className="table" tabIndex={0} aria-label="The reading">
           <table>
             <tbody>
               {rows.map(([name, text]) => (
@@ -42,7 +42,7 @@ export function ReadingFindings({ record }: { record: RecordShown }) {
               ))}
             </tbody>
           </table>
-        </div>
+        </section>
       </section>
       <section className="section" aria-labelledby="decided">
         <h2 id="decided">What the reader decided</h2>

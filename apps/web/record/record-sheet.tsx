@@ -62,7 +62,9 @@ export function RecordSheet() {
             ) : null}
           </div>
           <p className="row gap">
-            <a href={siteAddress(desk.siteId, 'record').replace('/record', '/survey')}>A sheet for the visit, to print</a>
+            <a href={siteAddress(desk.siteId, 'record').replace('/record', '/survey')}>
+              A sheet for the visit, to print
+            </a>
           </p>
         </section>
       </div>
@@ -77,5 +79,7 @@ function lengthWords({ beginS, endS }: { beginS: number; endS: number }): string
 }
 
 function stepWords(intervalS: number): string {
-  return intervalS % 60 === 0 ? formatQuantity(intervalS / 60, 'min', 'given') : formatQuantity(intervalS, 's', 'given');
+  return intervalS % 60 === 0
+    ? formatQuantity(intervalS / 60, 'min', 'given')
+    : formatQuantity(intervalS, 's', 'given');
 }

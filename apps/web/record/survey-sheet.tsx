@@ -5,12 +5,22 @@ import { Head } from '../line/head.js';
 
 const ROWS: [string, string[]][] = [
   ['Transformer', ['plate: kVA, impedance %, load loss', 'taps and the one in use', 'photograph of the plate']],
-  ['Main board', ['nominal and highest voltage', 'free breaker way: rating, place', 'photograph, doors open, at a safe distance']],
+  [
+    'Main board',
+    ['nominal and highest voltage', 'free breaker way: rating, place', 'photograph, doors open, at a safe distance'],
+  ],
   ['Current transformer', ['ratio and class', 'place: before or behind the bank’s branch', 'direction']],
   ['Old bank', ['in or out, since when', 'plates of stages and reactors', 'what the controller shows']],
   ['Loads', ['drives and rectifiers: current, kind, choke', 'motors above 30 kW', 'welders, furnaces, large lighting']],
   ['Room', ['free width, depth, height', 'temperature and dust', 'cable route and length to the board']],
-  ['Meter', ['where it stands: bus or primary', 'how interval data can be had, for which months', 'tariff’s clause on reactive energy']],
+  [
+    'Meter',
+    [
+      'where it stands: bus or primary',
+      'how interval data can be had, for which months',
+      'tariff’s clause on reactive energy',
+    ],
+  ],
 ];
 
 /** One page for the visit, with room to write. */
@@ -26,8 +36,8 @@ export function SurveySheet({ siteId }: { siteId: string }) {
       <main className="sites">
         <h1>Site survey: {name}</h1>
         <p className="caption">
-          Three questions decide most: how strong is the supply, what distorts, and was a bank working while the record was
-          taken?
+          Three questions decide most: how strong is the supply, what distorts, and was a bank working while the record
+          was taken?
         </p>
         <table>
           <thead>

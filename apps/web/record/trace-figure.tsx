@@ -13,6 +13,7 @@ export function TraceFigure({ recordId }: { recordId: string }) {
   const { desk } = useDesk();
   const [trace, setTrace] = useState<Trace | null>(null);
   const [place, width] = usePlotWidth();
+  // biome-ignore lint/correctness/useExhaustiveDependencies: another record is another trace
   useEffect(() => {
     let isCurrent = true;
     void desk.trace()?.then((found) => isCurrent && setTrace(found));
@@ -36,12 +37,16 @@ export function TraceFigure({ recordId }: { recordId: string }) {
 
 function TraceCanvas({ trace, width }: { trace: Trace; width: number }) {
   const canvas = useRef<HTMLCanvasElement | null>(null);
-  const [pyramids] = useState(() => ({ kw: new TracePyramid(trace.activeKw), kvar: new TracePyramid(trace.reactiveKvar) }));
+  const [pyramids] = useState(() => ({
+    kw: new TracePyramid(trace.activeKw),
+    kvar: new TracePyramid(trace.reactiveKvar),
+  }));
   const n = trace.beginS.length;
   const view = useRef<TraceView>({ from: 0, to: n });
   const theme = useTheme();
   const draw = () => {
-    if (canvas.current !== null) drawTrace(canvas.current, { trace, ...pyramids, view: view.current, width, height: HEIGHT });
+    if (canvas.current !== null)
+      drawTrace(canvas.current, { trace, ...pyramids, view: view.current, width, height: HEIGHT });
   };
   // biome-ignore lint/correctness/useExhaustiveDependencies: drawn again for another width or theme
   useEffect(draw, [width, theme, trace]);
@@ -69,7 +74,6 @@ function TraceCanvas({ trace, width }: { trace: Trace; width: number }) {
   return (
     <canvas
       ref={canvas}
-      // biome-ignore lint/a11y/noNoninteractiveTabindex: the picture is moved by keyboard
       tabIndex={0}
       role="img"
       aria-label="The record's kW and kvar over time; + and − zoom, arrow keys move"

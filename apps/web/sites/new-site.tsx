@@ -23,8 +23,11 @@ export function NewSite() {
     } catch (error) {
       if (error instanceof Refused) {
         setProblems(error.problem.problems);
-        setFailure(`Not added: ${error.problem.problems.map(({ path, expected }) => `${path ?? ''} needs ${expected}`).join('; ')}.`);
-      } else setFailure(error instanceof NoConnection ? 'Not added: no connection. What you typed is kept.' : String(error));
+        setFailure(
+          `Not added: ${error.problem.problems.map(({ path, expected }) => `${path ?? ''} needs ${expected}`).join('; ')}.`,
+        );
+      } else
+        setFailure(error instanceof NoConnection ? 'Not added: no connection. What you typed is kept.' : String(error));
     }
   };
   const example = async () => {
@@ -69,7 +72,11 @@ export function NewSite() {
           </button>
           <label className="way">
             Add from a site file{' '}
-            <input type="file" accept=".json,application/json" onChange={({ target }) => void importFile(target.files?.[0])} />
+            <input
+              type="file"
+              accept=".json,application/json"
+              onChange={({ target }) => void importFile(target.files?.[0])}
+            />
           </label>
         </p>
       </form>

@@ -77,7 +77,9 @@ function useSites() {
       setSites((await ask<{ sites: SiteListed[] }>('/api/sites')).body.sites);
       setFailure('');
     } catch (error) {
-      setFailure(error instanceof NoConnection ? 'No connection' : error instanceof Refused ? error.message : String(error));
+      setFailure(
+        error instanceof NoConnection ? 'No connection' : error instanceof Refused ? error.message : String(error),
+      );
     }
   }, []);
   useEffect(() => void reload(), [reload]);
@@ -131,5 +133,10 @@ function SiteRow({ site, onChange, onRemove }: { site: SiteListed; onChange: () 
 }
 
 function plainFileName(name: string): string {
-  return name.toLowerCase().replaceAll(/[^a-z0-9]+/g, '-').replaceAll(/^-|-$/g, '') || 'site';
+  return (
+    name
+      .toLowerCase()
+      .replaceAll(/[^a-z0-9]+/g, '-')
+      .replaceAll(/^-|-$/g, '') || 'site'
+  );
 }

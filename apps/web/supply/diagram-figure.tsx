@@ -45,9 +45,16 @@ function DiagramSvg({ diagram, width }: { diagram: SingleLine; width: number }) 
       {transformers.length === 0 ? (
         <path className="tick" strokeWidth="1.4" d={`M${feedX} 40V${BUS_Y}`} />
       ) : (
-        transformers.slice(0, 3).map((transformer, at) => (
-          <Transformer key={at} x={feedX + at * 46} feedX={feedX} words={at === transformers.length - 1 || at === 2 ? transformer : null} />
-        ))
+        transformers
+          .slice(0, 3)
+          .map((transformer, at) => (
+            <Transformer
+              key={at}
+              x={feedX + at * 46}
+              feedX={feedX}
+              words={at === transformers.length - 1 || at === 2 ? transformer : null}
+            />
+          ))
       )}
       <path className="stroke-ink" strokeWidth="5" d={`M0 ${BUS_Y}H${width}`} />
       <text className="axis" x={0} y={BUS_Y - 10}>
@@ -82,7 +89,15 @@ function Grid({ x, words }: { x: number; words: string }) {
   );
 }
 
-function Transformer({ x, feedX, words }: { x: number; feedX: number; words: { name: string; detail: string } | null }) {
+function Transformer({
+  x,
+  feedX,
+  words,
+}: {
+  x: number;
+  feedX: number;
+  words: { name: string; detail: string } | null;
+}) {
   return (
     <g>
       {x === feedX ? null : <path className="stroke-ink" strokeWidth="1.4" d={`M${feedX} 40H${x}V46`} />}
@@ -121,7 +136,10 @@ function FeederSymbol({ feeder, x, pitch }: { feeder: Feeder; x: number; pitch: 
       ) : feeder.symbol === 'converter' ? (
         <>
           <rect className="none stroke-ink" strokeWidth="1.4" x={x - 13} y={y} width={26} height={26} />
-          <path className="none stroke-ink" d={`M${x - 13} ${y + 26}l26-26M${x - 9} ${y + 8}q3-5 5 0t5 0M${x + 2} ${y + 18}h8m-8 4h8`} />
+          <path
+            className="none stroke-ink"
+            d={`M${x - 13} ${y + 26}l26-26M${x - 9} ${y + 8}q3-5 5 0t5 0M${x + 2} ${y + 18}h8m-8 4h8`}
+          />
         </>
       ) : (
         <path className="fill-ink" d={`M${x - 6} ${y}h12l-6 18Z`} />
@@ -159,7 +177,11 @@ function BankBranch({
   const line = y + 20;
   return (
     <g className="bank-branch">
-      <path className="none stroke-bank" strokeWidth="1.6" d={`M${(x(0) + x(stages.length - 1)) / 2} ${busY}V${line}`} />
+      <path
+        className="none stroke-bank"
+        strokeWidth="1.6"
+        d={`M${(x(0) + x(stages.length - 1)) / 2} ${busY}V${line}`}
+      />
       <path className="none stroke-bank" strokeWidth="2.4" d={`M${x(0)} ${line}H${x(stages.length - 1)}`} />
       {stages.map((stage, at) => (
         <StageBranch key={at} stage={stage} x={x(at)} y={line} />
@@ -176,7 +198,11 @@ function BankBranch({
 function StageBranch({ stage, x, y }: { stage: StageSymbol; x: number; y: number }) {
   return (
     <g>
-      <path className="none stroke-bank" strokeWidth="1.3" d={stage.switched ? `M${x} ${y}v8m-5 1l5 12v4` : `M${x} ${y}v25`} />
+      <path
+        className="none stroke-bank"
+        strokeWidth="1.3"
+        d={stage.switched ? `M${x} ${y}v8m-5 1l5 12v4` : `M${x} ${y}v25`}
+      />
       {stage.detuned ? (
         <path className="none stroke-bank" strokeWidth="1.3" d={`M${x} ${y + 25}q6 4 0 8q6 4 0 8q6 4 0 8v6`} />
       ) : (

@@ -25,8 +25,18 @@ export function LoadFields() {
       <section className="section" aria-labelledby="damping">
         <h2 id="damping">What damps a resonance</h2>
         <div className="fields">
-          <QuantityField path="loads.motorSharePct" label="motors, of the damping load" unit="%" otherwise="60, assumed" />
-          <QuantityField path="loads.dampingKw.max" label="damping load, at the most" unit="kW" otherwise="the mean load" />
+          <QuantityField
+            path="loads.motorSharePct"
+            label="motors, of the damping load"
+            unit="%"
+            otherwise="60, assumed"
+          />
+          <QuantityField
+            path="loads.dampingKw.max"
+            label="damping load, at the most"
+            unit="kW"
+            otherwise="the mean load"
+          />
           <QuantityField path="loads.dampingKw.min" label="at the least" unit="kW" otherwise="0, assumed" />
           <ChoiceField
             path="loads.summation"
@@ -119,7 +129,11 @@ function Background() {
         </span>
       </div>
       <p className="caption">
-        {list === undefined ? 'Not known yet.' : list.length === 0 ? 'Declared: the supply is free of distortion.' : 'Voltage behind the source, % of nominal.'}
+        {list === undefined
+          ? 'Not known yet.'
+          : list.length === 0
+            ? 'Declared: the supply is free of distortion.'
+            : 'Voltage behind the source, % of nominal.'}
       </p>
       {list?.map((_, at) => (
         <fieldset key={at} aria-label={`Background order ${at + 1}`}>

@@ -23,8 +23,18 @@ export function SupplySheet() {
           result === null
             ? []
             : [
-                { value: result.network.shortCircuitMva, unit: 'MVA', under: 'fault level at the bus', id: 'network.shortCircuitMva' },
-                { value: result.network.shortCircuitMinMva, unit: 'MVA', under: 'at the least', id: 'network.shortCircuitMinMva' },
+                {
+                  value: result.network.shortCircuitMva,
+                  unit: 'MVA',
+                  under: 'fault level at the bus',
+                  id: 'network.shortCircuitMva',
+                },
+                {
+                  value: result.network.shortCircuitMinMva,
+                  unit: 'MVA',
+                  under: 'at the least',
+                  id: 'network.shortCircuitMinMva',
+                },
               ]
         }
       >
@@ -35,7 +45,9 @@ export function SupplySheet() {
           <section className="section">
             <h2>Single-line diagram</h2>
             <p className="caption">
-              {state.records.length === 0 ? 'Drawn once a meter record is read.' : 'Drawn once the inputs are readable.'}
+              {state.records.length === 0
+                ? 'Drawn once a meter record is read.'
+                : 'Drawn once the inputs are readable.'}
             </p>
           </section>
         ) : (
@@ -45,11 +57,20 @@ export function SupplySheet() {
           <h2 id="supply-fields">Supply</h2>
           <div className="fields">
             <QuantityField path="supply.faultLevelMva.max" label="fault level, greatest" unit="MVA" />
-            <QuantityField path="supply.faultLevelMva.min" label="fault level, least" unit="MVA" otherwise="the same, assumed" />
+            <QuantityField
+              path="supply.faultLevelMva.min"
+              label="fault level, least"
+              unit="MVA"
+              otherwise="the same, assumed"
+            />
             <QuantityField path="bus.nominalV" label="bus voltage" unit="V" />
             <QuantityField path="bus.highestV" label="bus, at the highest" unit="V" otherwise="assumed" />
             <QuantityField path="supply.rOverX" label="R/X of the supply" otherwise="0.1, assumed" />
-            <QuantityField path="supply.resistanceExponent" label="resistance grows as order to" otherwise="0.5, assumed" />
+            <QuantityField
+              path="supply.resistanceExponent"
+              label="resistance grows as order to"
+              otherwise="0.5, assumed"
+            />
             <QuantityField path="supply.rippleHz" label="ripple control" unit="Hz" otherwise="none" />
             <QuantityField path="frequencyHz" label="frequency" unit="Hz" />
           </div>

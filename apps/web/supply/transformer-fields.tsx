@@ -24,10 +24,30 @@ export function TransformerFields({ count }: { count: number }) {
           <div className="fields">
             <QuantityField path={`supply.transformers[${at}].ratedKva`} label="rated" unit="kVA" />
             <QuantityField path={`supply.transformers[${at}].impedancePct`} label="impedance" unit="%" />
-            <QuantityField path={`supply.transformers[${at}].impedanceTolerancePct`} label="its tolerance" unit="%" otherwise="10, assumed" />
-            <QuantityField path={`supply.transformers[${at}].loadLossKw`} label="load loss" unit="kW" otherwise="0, assumed" />
-            <QuantityField path={`supply.transformers[${at}].noLoadLossKw`} label="no-load loss" unit="kW" otherwise="0, assumed" />
-            <QuantityField path={`supply.transformers[${at}].noLoadCurrentPct`} label="no-load current" unit="%" otherwise="0, assumed" />
+            <QuantityField
+              path={`supply.transformers[${at}].impedanceTolerancePct`}
+              label="its tolerance"
+              unit="%"
+              otherwise="10, assumed"
+            />
+            <QuantityField
+              path={`supply.transformers[${at}].loadLossKw`}
+              label="load loss"
+              unit="kW"
+              otherwise="0, assumed"
+            />
+            <QuantityField
+              path={`supply.transformers[${at}].noLoadLossKw`}
+              label="no-load loss"
+              unit="kW"
+              otherwise="0, assumed"
+            />
+            <QuantityField
+              path={`supply.transformers[${at}].noLoadCurrentPct`}
+              label="no-load current"
+              unit="%"
+              otherwise="0, assumed"
+            />
             <p className="row">
               <button type="button" className="way" onClick={() => put(list.toSpliced(at, 1))}>
                 Remove

@@ -7,7 +7,9 @@ import { latestResult } from '../line/latest-result.js';
 export function WorkingBlocks({ ids }: { ids: readonly string[] }) {
   const { state } = useDesk();
   const figures = latestResult(state)?.figures ?? [];
-  const found = ids.flatMap((id) => figures.filter((figure) => figure.id === id || (id.endsWith('*') && figure.id.startsWith(id.slice(0, -1)))));
+  const found = ids.flatMap((id) =>
+    figures.filter((figure) => figure.id === id || (id.endsWith('*') && figure.id.startsWith(id.slice(0, -1)))),
+  );
   if (found.length === 0) return <p className="working soft">The engine gives no working for these figures yet.</p>;
   return (
     <>
@@ -32,9 +34,7 @@ export function WorkingBlock({ figure }: { figure: Figure }) {
         <span className="caption">{label}</span>
       </p>
       <p className="formula">{formula}</p>
-      <p className="formula num">
-        = {working}
-      </p>
+      <p className="formula num">= {working}</p>
       <p className="formula num">
         = {formatNumber(value, 'answer')}
         {shown}
