@@ -5,8 +5,8 @@ import type { JobShown } from '../api/shown.js';
 export type JobEnd = JobShown & { state: 'done' | 'failed' | 'cancelled' };
 
 const keyOf = (siteId: string) => `varwright:job:${siteId}`;
-/** Asked so often where events do not come through [ms]. */
-const ASK_AGAIN_MS = 1000;
+/** Asked so often [ms]. */
+const ASK_AGAIN_MS = 400;
 
 /** @returns the job this browser waited for when the page was left */
 export function keptJob(siteId: string): number | null {

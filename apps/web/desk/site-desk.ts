@@ -1,7 +1,7 @@
 import type { BankInput, Problem } from '#libs/engine/index.js';
 import type { Station } from '../address.js';
 import { ask, NoConnection, Refused } from '../api/ask.js';
-import type { RecordShown, RevisionHeadShown, RevisionShown, SiteDocument, SiteShown } from '../api/shown.js';
+import type { RecordShown, RevisionHeadShown, RevisionShown, SiteShown } from '../api/shown.js';
 import { withValueAt } from '../field/document-path.js';
 import { clockNow } from './clock-now.js';
 import { InputRefused } from './desk-link.js';
@@ -65,7 +65,6 @@ export class SiteDesk {
     this.#stopJob?.();
   }
 
-  /** Another station was opened: its charts are made. */
   openStation(station: Station): void {
     this.#station = station;
     if (this.#engine !== null) this.#look(true);
@@ -129,8 +128,7 @@ export class SiteDesk {
    */
   async upload(file: File, options: Record<string, string>): Promise<RecordShown> {
     const query = new URLSearchParams({ name: file.name, ...options });
-    const headers = { 'content-type': 'application/octet-stream' };
-    const asking = { method: 'POST' as const, body: file, headers };
+    const asking = { method: 'POST' as const, body: file, headers: { 'content-type': 'application/octet-stream' } };
     const { body } = await ask<RecordShown>(`${this.#path()}/records?${query}`, asking);
     await this.#refresh();
     this.#prepareEngine();

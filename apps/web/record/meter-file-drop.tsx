@@ -116,13 +116,18 @@ function AskedInPlace({ question, onAnswer }: { question: QuestionAsked; onAnswe
   );
 }
 
+/** What a reading takes the file for: "energy", "active in W, reactive in var". */
 function mapWords(map: object): string {
-  return Object.entries(map)
-    .map(
-      ([name, value]) =>
-        `${spaced(name)}: ${typeof value === 'object' ? JSON.stringify(value) : spaced(String(value))}`,
-    )
-    .join(', ');
+  const parts = Object.entries(map).map(([name, value]) => {
+    if (value === null || typeof value !== 'object') {
+      return name === 'quantity'
+        ? `${value} in ${value === 'power' ? 'kW and kvar' : 'kWh and kvarh'}`
+        : `${spaced(name)}: ${spaced(String(value))}`;
+    }
+    const inner = Object.entries(value as object).sort(([one], [other]) => (one < other ? -1 : 1));
+    return inner.map(([column, word]) => `${spaced(column)} ${name === 'units' ? 'in' : 'from'} ${word}`).join(', ');
+  });
+  return parts.join(', ');
 }
 
 function spaced(word: string): string {
