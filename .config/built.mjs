@@ -1,6 +1,7 @@
 // Runs a program of dist, after building it where a source has changed since.
 //   node .config/built.mjs                     builds where needed
 //   node .config/built.mjs apps/cli/main.js …  builds where needed, then runs the program with the rest as its arguments
+// The page is a build of its own: the server needs it, the commands do not.
 // Says nothing on stdout: that belongs to the program.
 import { spawnSync } from 'node:child_process';
 import {
@@ -22,8 +23,12 @@ const stampFile = join(dist, '.built');
 const lockFile = join(dist, '.building');
 const sourceFolders = ['apps/server', 'apps/cli', 'libs', 'migrations'];
 const settings = ['package.json', 'tsconfig.json', '.config/tsconfig.build.json'];
+const pageStampFile = join(dist, '.built-page');
+const pageFolders = ['apps/web', 'libs/engine', 'libs/contract', 'libs/present'];
+const pageSettings = ['package.json', '.config/vite.config.mjs', '.config/page-fonts.mjs'];
 
 const [program, ...args] = process.argv.slice(2);
+const needsPage = (program === undefined || program.startsWith('apps/server/')) && existsSync(join(root, 'apps/web'));
 if (!buildIfNeeded()) {
   process.stderr.write('the build failed\n');
   process.exitCode = 1;
@@ -34,10 +39,10 @@ if (!buildIfNeeded()) {
 }
 
 function buildIfNeeded() {
-  if (isCurrent()) return true;
+  if (isCurrent() && (!needsPage || isPageCurrent())) return true;
   takeLock();
   try {
-    return isCurrent() || build();
+    return (isCurrent() || build()) && (!needsPage || isPageCurrent() || buildPage());
   } finally {
     rmSync(lockFile, { force: true });
   }
@@ -45,6 +50,25 @@ function buildIfNeeded() {
 
 function isCurrent() {
   return existsSync(stampFile) && readFileSync(stampFile, 'utf8') === stampOf(sourceFiles());
+}
+
+function isPageCurrent() {
+  const stamp = () => stampOf(filesOf(pageFolders, pageSettings));
+  return existsSync(pageStampFile) && readFileSync(pageStampFile, 'utf8') === stamp();
+}
+
+function buildPage() {
+  const stamp = stampOf(filesOf(pageFolders, pageSettings));
+  rmSync(pageStampFile, { force: true });
+  const vite = join(root, 'node_modules', 'vite', 'bin', 'vite.js');
+  const config = join(root, '.config', 'vite.config.mjs');
+  const done = spawnSync(process.execPath, [vite, 'build', '--config', config, '--logLevel', 'warn'], {
+    cwd: root,
+    stdio: ['ignore', 2, 2],
+  });
+  if (done.status !== 0) return false;
+  writeFileSync(pageStampFile, stamp);
+  return true;
 }
 
 function build() {
@@ -64,8 +88,16 @@ function build() {
 
 /** Every file the build depends on, as paths from the root. */
 function sourceFiles() {
-  const found = settings.filter((file) => existsSync(join(root, file)));
-  for (const folder of sourceFolders) {
+  return filesOf(sourceFolders, settings);
+}
+
+/**
+ * @param {string[]} folders
+ * @param {string[]} more
+ */
+function filesOf(folders, more) {
+  const found = more.filter((file) => existsSync(join(root, file)));
+  for (const folder of folders) {
     if (!existsSync(join(root, folder))) continue;
     for (const entry of readdirSync(join(root, folder), { recursive: true, withFileTypes: true })) {
       const path = relative(root, join(entry.parentPath, entry.name));

@@ -25,6 +25,8 @@ const PACKAGE_HOMES = {
   fastify: ['apps/server'],
   rxjs: ['apps/server'],
   pino: ['apps/server', 'apps/cli'],
+  react: ['apps/web'],
+  'react-dom': ['apps/web'],
 };
 
 /** What the page loads or the engine is made of runs in a browser too. */

@@ -37,7 +37,13 @@ const SOURCE_FOLDERS = ['apps', 'libs', 'migrations', 'test', '.config'];
  */
 export function readHouse(root) {
   const paths = SOURCE_FOLDERS.flatMap((folder) => modulePaths(root, folder)).sort();
-  return { root, modules: paths.map((path) => readModule(root, path)), topLevel: readdirSync(root).sort() };
+  const modules = paths.map((path) => readModule(root, path));
+  // A component is imported by the name of what it compiles to, as every module is.
+  const components = new Map(paths.filter((path) => path.endsWith('.tsx')).map((path) => [path.slice(0, -1), path]));
+  for (const entry of modules.flatMap(({ imports }) => imports)) {
+    entry.target = components.get(entry.target ?? '') ?? entry.target;
+  }
+  return { root, modules, topLevel: readdirSync(root).sort() };
 }
 
 /**
@@ -64,7 +70,7 @@ function readModule(root, path) {
 
 /** @param {string} path */
 function isTest(path) {
-  return path.endsWith('.spec.ts') || path.startsWith('test/');
+  return /\.spec\.tsx?$/.test(path) || path.startsWith('test/');
 }
 
 /** @param {string} path */

@@ -46,6 +46,8 @@ async function describeRoutes(app: INestApplication): Promise<OpenAPIObject> {
   }
   delete document.paths['/api/{path}'];
   delete document.paths['/api/*'];
+  delete document.paths['/page/{path}'];
+  delete document.paths['/page/*'];
   return document;
 }
 

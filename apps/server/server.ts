@@ -17,6 +17,8 @@ import { JobsController } from './jobs/jobs-controller.js';
 import { refuseForeign } from './local-requests.js';
 import { OpenApi } from './open-api.js';
 import { OpenApiController } from './open-api-controller.js';
+import { PageController } from './page/page-controller.js';
+import { PageFiles } from './page/page-files.js';
 import { planRunner } from './planning/plan-runner.js';
 import { Planning } from './planning/planning.js';
 import { PlanningController } from './planning/planning-controller.js';
@@ -35,10 +37,13 @@ import { UnknownController } from './unknown-controller.js';
 export interface ServerParts {
   /** compiled file of the worker threads */
   workerFile: URL;
+  /** folder of the built page */
+  pageFolder: URL;
   controllers: NonNullable<DynamicModule['controllers']>;
 }
 
 const CONTROLLERS: ServerParts['controllers'] = [
+  PageController,
   HomeController,
   HealthController,
   SitesController,
@@ -63,6 +68,7 @@ export async function createServer(
   settings: Settings,
   {
     workerFile = new URL('./planning/planning-worker.js', import.meta.url),
+    pageFolder = new URL('../web/', import.meta.url),
     controllers = CONTROLLERS,
   }: Partial<ServerParts> = {},
 ): Promise<NestFastifyApplication> {
@@ -88,6 +94,7 @@ export async function createServer(
       { provide: WorkerPool, useValue: pool },
       { provide: JOBS, useValue: jobs },
       { provide: OpenApi, useValue: new OpenApi() },
+      { provide: PageFiles, useValue: new PageFiles(pageFolder) },
       RecordImport,
       Planning,
       {

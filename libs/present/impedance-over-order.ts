@@ -36,8 +36,11 @@ export interface SharedScale {
 /** A bank's scan ready to be drawn beside another. */
 export interface ImpedanceFigure {
   scale: SharedScale;
-  /** @param shared scale of both banks, where there are two */
-  chart(shared?: SharedScale): Chart;
+  /**
+   * @param shared scale of both banks, where there are two
+   * @param levelKvar the level drawn heavy; all stages in where absent
+   */
+  chart(shared?: SharedScale, levelKvar?: number): Chart;
 }
 
 /**
@@ -54,7 +57,11 @@ export function impedanceOverOrder(outcome: Outcome, bank: Bank, name: string): 
   const scan = scanBank(outcome, bank, endH);
   const all = scan.levels.flatMap(({ ohm }) => [Math.min(...ohm), Math.max(...ohm)]);
   const scale = { leastOhm: Math.min(...all), mostOhm: Math.max(...all) };
-  return { scale, chart: (shared = scale) => drawn({ scan, present, name, endH }, shared) };
+  return {
+    scale,
+    chart: (shared = scale, levelKvar = Number.POSITIVE_INFINITY) =>
+      drawn({ scan, present, name, endH, levelKvar }, shared),
+  };
 }
 
 /** Orders that some load or the supply brings. */
@@ -110,11 +117,14 @@ interface Drawing {
   present: number[];
   name: string;
   endH: number;
+  levelKvar: number;
 }
 
-function drawn({ scan, present, name, endH }: Drawing, scale: SharedScale): Chart {
+function drawn({ scan, present, name, endH, levelKvar }: Drawing, scale: SharedScale): Chart {
   const none = scan.levels[0]!;
-  const full = scan.levels.at(-1)!;
+  const full = scan.levels.findLast((level) => level.levelKvar <= levelKvar + 1e-6) ?? none;
+  const isAll = full === scan.levels.at(-1);
+  const which = isAll ? 'all stages in' : formatQuantity(full.levelKvar, 'kvar');
   const milli = (ohm: Float64Array) => ohm.map((value) => value * 1000);
   const withBank = scan.levels.slice(1);
   const top = extreme(withBank, scan.ordersH.length, Math.max);
@@ -122,7 +132,7 @@ function drawn({ scan, present, name, endH }: Drawing, scale: SharedScale): Char
   const peak = full === none ? null : full.peak;
   return {
     id: 'impedanceOverOrder',
-    finding: `${name}: ${peak === null ? 'no peak with all stages in' : `all stages in, the peak lies at order ${formatNumber(peak.orderH)}`}`,
+    finding: `${name}: ${peak === null ? `no peak with ${which}` : `${which}, the peak lies at order ${formatNumber(peak.orderH)}`}`,
     caption: 'Impedance at the bus, nominal case.',
     sentence: sentence(scan, name, present),
     x: orderAxis(endH, present),

@@ -5,7 +5,7 @@ import { formatMoment } from './local-stamp.js';
 import { linearAxis } from './ticks.js';
 
 /** One interval at the bus, before and after the bank. */
-interface Moment {
+export interface Moment {
   beginS: number;
   kw: number;
   loadKvar: number;
@@ -16,10 +16,10 @@ interface Moment {
  * Currents of one interval against the voltage, drawn to the right: the load's lags, downwards; the capacitors' leads
  * by 90°, upwards; their sum is what the supply carries.
  * @param outcome the plan or judgement
+ * @param moment which interval; the worst where absent
  * @returns chart with one scale for both directions, in ampere at nominal voltage
  */
-export function phasors(outcome: Outcome): Chart {
-  const moment = worstMoment(outcome);
+export function phasors(outcome: Outcome, moment: Moment = worstMoment(outcome)): Chart {
   const perKva = 1000 / (Math.sqrt(3) * outcome.site.nominalV);
   const load: [number, number] = [moment.kw * perKva, -moment.loadKvar * perKva];
   const sum: [number, number] = [load[0], load[1] + moment.bankKvar * perKva];

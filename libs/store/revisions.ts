@@ -4,16 +4,18 @@ import { Revision } from './revision.js';
 import { StoredSite } from './stored-site.js';
 
 /** What a list of sites shows of each one's latest revision. */
-export type RevisionMark = Pick<Revision, 'siteId' | 'revision' | 'kind' | 'verdict' | 'createdAt'>;
+export type RevisionMark = Pick<Revision, 'siteId' | 'revision' | 'kind' | 'verdict' | 'createdAt' | 'proposed'>;
 
 /** The latest revision of every site that has one. */
 export async function latestRevisions(manager: EntityManager): Promise<RevisionMark[]> {
   const rows = await manager
     .createQueryBuilder(Revision, 'revision')
     .innerJoin(StoredSite, 'site', 'site.id = revision.siteId AND site.lastRevision = revision.revision')
-    .select(['siteId', 'revision', 'kind', 'verdict', 'createdAt', 'id'].map((name) => `revision.${name}`))
+    .select(['siteId', 'revision', 'kind', 'verdict', 'createdAt', 'proposed', 'id'].map((name) => `revision.${name}`))
     .getMany();
-  return rows.map(({ siteId, revision, kind, verdict, createdAt }) => ({ siteId, revision, kind, verdict, createdAt }));
+  return rows.map(({ siteId, revision, kind, verdict, createdAt, proposed }) => ({
+    ...{ siteId, revision, kind, verdict, createdAt, proposed },
+  }));
 }
 
 /** A revision that has not got its number yet, and the proposal made for that number. */

@@ -13,7 +13,7 @@ for (const { name, available, create } of databases) {
   describe.runIf(available)(`the example of a new installation, on ${name}`, () => {
     let database: TestDatabase;
     let server: TestServer;
-    const page = async (path = '/') => (await server.ask('GET', path)).body as string;
+    const page = async (path = '/plain') => (await server.ask('GET', path)).body as string;
 
     beforeAll(async () => {
       database = await create();

@@ -7,6 +7,7 @@ import { readSettings, type Settings } from '#apps/server/settings.js';
 
 /** Worker threads run compiled code: `npm test` builds it first. */
 const WORKER = pathToFileURL(join(import.meta.dirname, '../../dist/apps/server/planning/planning-worker.js'));
+const PAGE = pathToFileURL(`${join(import.meta.dirname, '../../dist/apps/web')}/`);
 
 /** A server of this test, listening on a port of its own. */
 export interface TestServer {
@@ -39,7 +40,7 @@ export async function startServer(
 ): Promise<TestServer> {
   const dataDir = mkdtempSync(join(tmpdir(), 'varwright-server-'));
   const own = readSettings({ DB_URL: dbUrl, DATA_DIR: dataDir, DEMO: 'off', LOG_LEVEL: 'silent' });
-  const app = await createServer({ ...own, ...settings }, { workerFile: WORKER, ...parts });
+  const app = await createServer({ ...own, ...settings }, { workerFile: WORKER, pageFolder: PAGE, ...parts });
   await app.listen(0, '127.0.0.1');
   const base = `http://127.0.0.1:${new URL(await app.getUrl()).port}`;
   const close = async () => {

@@ -7,19 +7,19 @@ import { homePage } from './home-page.js';
 import { PAGE_STYLE } from './page-style.js';
 import { siteView } from './site-view.js';
 
-/** A plain page for people: one site, its verdict and the ways to its papers. */
+/** A plain page without scripts: one site, its verdict and the ways to its papers. */
 @Controller()
 export class HomeController {
   constructor(private readonly store: Store) {}
 
-  @Get()
-  @Public('Shows the first site.')
+  @Get('plain')
+  @Public('Shows the first site on a page without scripts.')
   async first(@Res() reply: FastifyReply) {
     return this.#show(undefined, reply);
   }
 
   @Get('sites/:siteId')
-  @Public('Shows a site.')
+  @Public('Shows a site on a page without scripts.')
   async site(@Param('siteId') siteId: string, @Res() reply: FastifyReply) {
     const { id } = await findSite(this.store, siteId);
     return this.#show(id, reply);

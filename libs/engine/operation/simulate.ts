@@ -40,6 +40,35 @@ export function simulate(
   return { connectedKvar, switchings: state.switchings };
 }
 
+/**
+ * Which stages are in through a stretch of the record; what happened before it is run through first.
+ * @param bank the controller's view of the bank
+ * @param control settings
+ * @param view what the controller sees, length n
+ * @param stretch first interval and the one after the last, 0 ≤ from ≤ to ≤ n
+ * @returns 1 where a stage is in, stage after stage for each interval, length (to − from) · stages
+ * @source method-controller
+ */
+export function stagesThrough(
+  bank: SwitchedBank,
+  control: Control,
+  view: ControllerView,
+  stretch: { from: number; to: number },
+): Uint8Array {
+  const state = new SwitchState(bank, control, view.intervalS);
+  const stagesIn = new Uint8Array((stretch.to - stretch.from) * bank.stageCount);
+  for (let i = 0; i < stretch.to; i++) {
+    const scale = view.voltageScale === null ? 1 : view.voltageScale[i]!;
+    if (view.standby !== null && view.standby[i] === 1) state.holdOff(view.beginS[i]!);
+    else {
+      const d = view.wantedKvar[i]! - state.levelKvar * scale;
+      if (d > state.bandKvar || d < -state.bandKvar) state.decide(view.beginS[i]!, view.wantedKvar[i]!, scale);
+    }
+    if (i >= stretch.from) stagesIn.set(state.on, (i - stretch.from) * bank.stageCount);
+  }
+  return stagesIn;
+}
+
 // The common interval is two compares: everything else is in the state's own functions.
 function runPlainInto(state: SwitchState, view: ControllerView, connectedKvar: Float64Array): void {
   const { wantedKvar, beginS } = view;
@@ -116,6 +145,10 @@ class SwitchState {
       decision.connected[c] = decision.chosen[c]!;
     }
     return this.#settleLevel();
+  }
+
+  get on(): Uint8Array {
+    return this.#on;
   }
 
   holdOff(beginS: number): void {

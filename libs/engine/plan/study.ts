@@ -1,6 +1,7 @@
 import type { Bank } from '../layout/bank.js';
 import { type NetworkModel, siteNetwork } from '../network/network-model.js';
 import type { Control } from '../operation/control.js';
+import type { ControllerView } from '../operation/controller-view.js';
 import { type MeterAfter, meterAfter } from '../operation/meter-after.js';
 import { type OperationMonth, operationMonths, type Simulated } from '../operation/operation.js';
 import { simulate } from '../operation/simulate.js';
@@ -102,13 +103,7 @@ export interface Operated extends Simulated {
  */
 export function operate(study: Study, bank: Bank, control: Control): Operated {
   const { record, load } = study;
-  const tanSet = tanFromPowerFactor(control.setPointPowerFactor);
-  const wantedKvar = new Float64Array(record.beginS.length);
-  for (let i = 0; i < wantedKvar.length; i++) {
-    wantedKvar[i] = load.reactiveKvar[i]! - targetKw(load.activeKw[i]!, study.target.onExport) * tanSet;
-  }
-  const view = { ...record, wantedKvar, voltageScale: study.voltageScale };
-  const run = simulate(switchedBank(bank, study.site.nominalV), control, view);
+  const run = simulate(switchedBank(bank, study.site.nominalV), control, controllerView(study, control));
   const deliveredKvar = atVoltage(run.connectedKvar, study.voltageScale);
   const meter = meterAfter(record, load, deliveredKvar);
   return {
@@ -121,6 +116,23 @@ export function operate(study: Study, bank: Bank, control: Control): Operated {
     control,
     months: operationMonths(meter, study.months, record.intervalS / 3600),
   };
+}
+
+/**
+ * What the controller sees of the record.
+ * @param study site and record
+ * @param control settings; the set point decides what is wanted
+ * @returns columns of length n
+ * @source method-controller
+ */
+export function controllerView(study: Study, control: Control): ControllerView {
+  const { record, load } = study;
+  const tanSet = tanFromPowerFactor(control.setPointPowerFactor);
+  const wantedKvar = new Float64Array(record.beginS.length);
+  for (let i = 0; i < wantedKvar.length; i++) {
+    wantedKvar[i] = load.reactiveKvar[i]! - targetKw(load.activeKw[i]!, study.target.onExport) * tanSet;
+  }
+  return { ...record, wantedKvar, voltageScale: study.voltageScale };
 }
 
 /**

@@ -1,0 +1,55 @@
+import { useSyncExternalStore } from 'react';
+
+/** The stations, left to right. */
+export const STATIONS = ['record', 'supply', 'need', 'bank', 'network', 'money', 'proposal'] as const;
+export type Station = (typeof STATIONS)[number];
+
+/** Where the reader is: what stands behind the # of the address. */
+export type Address =
+  | { page: 'sites' }
+  | { page: 'site'; siteId: string; station: Station; field: string | null; figure: string | null }
+  | { page: 'survey'; siteId: string }
+  | { page: 'unknown'; asked: string };
+
+/** @param hash as the browser has it */
+export function readAddress(hash: string): Address {
+  const [path = '', search = ''] = hash.replace(/^#?\/?/, '').split('?');
+  if (path === '') return { page: 'sites' };
+  const [first, siteId, station = 'bank', ...rest] = path.split('/');
+  if (first !== 'sites' || siteId === undefined || rest.length > 0) return { page: 'unknown', asked: path };
+  if (station === 'survey') return { page: 'survey', siteId };
+  if (!isStation(station)) return { page: 'unknown', asked: path };
+  const asked = new URLSearchParams(search);
+  return { page: 'site', siteId, station, field: asked.get('field'), figure: asked.get('figure') };
+}
+
+/** @param part what is to be opened */
+export function siteAddress(siteId: string, station: Station, part: { field?: string; figure?: string } = {}): string {
+  const search = new URLSearchParams(part as Record<string, string>).toString();
+  return `#/sites/${siteId}/${station}${search === '' ? '' : `?${search}`}`;
+}
+
+function isStation(word: string): word is Station {
+  return (STATIONS as readonly string[]).includes(word);
+}
+
+/** The station at which a path of the site file is entered. */
+export function stationOfPath(path: string): Station {
+  const first = /^\w+/.exec(path)?.[0] ?? '';
+  if (['target'].includes(first)) return 'need';
+  if (['bank', 'control', 'catalogue'].includes(first)) return 'bank';
+  if (['recordedBank', 'timeZone', 'estimate', 'recordId'].includes(first)) return 'record';
+  if (['tariff', 'prices', 'finance', 'currency'].includes(first)) return 'money';
+  return 'supply';
+}
+
+function subscribe(changed: () => void): () => void {
+  window.addEventListener('hashchange', changed);
+  return () => window.removeEventListener('hashchange', changed);
+}
+
+/** The address, followed. */
+export function useAddress(): Address {
+  const hash = useSyncExternalStore(subscribe, () => window.location.hash);
+  return readAddress(hash);
+}

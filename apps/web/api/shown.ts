@@ -1,0 +1,81 @@
+import type { ProblemJson } from '#libs/contract/error-body.js';
+import type { RecordSummary, Remark, Result, Verdict } from '#libs/engine/index.js';
+
+/** A site file as JSON: what was typed into it, units and all. */
+export type SiteDocument = Record<string, unknown> & { name: string; timeZone: string };
+
+/** A site as the API gives it. */
+export interface SiteShown {
+  id: string;
+  number: number;
+  name: string;
+  version: number;
+  createdAt: string;
+  updatedAt: string;
+  site: SiteDocument;
+}
+
+/** A site in the list. */
+export interface SiteListed extends Omit<SiteShown, 'site'> {
+  latest: { revision: number; verdict: Verdict; proposed: string; createdAt: string } | null;
+}
+
+/** How good the file behind a record was. */
+export interface QualityShown {
+  format: string;
+  rowsRead: number;
+  intervalsExpected: number;
+  missingSpanCount: number;
+  missingSpans: { beginS: number; endS: number; intervals: number }[];
+  duplicates: number;
+  repaired: number;
+  rejectedRows: number;
+  seasonsMissing: string[];
+  grade: 'full' | 'usable' | 'limited' | 'insufficient';
+}
+
+/** A load record as the API gives it. */
+export interface RecordShown {
+  id: string;
+  hash: string;
+  file: { name: string | null; sha256: string; bytes: number };
+  record: RecordSummary;
+  quality: QualityShown;
+  createdAt: string;
+}
+
+/** A revision in a list. */
+export interface RevisionHeadShown {
+  siteId: string;
+  number: string;
+  revision: number;
+  kind: 'plan' | 'assess';
+  verdict: Verdict;
+  createdAt: string;
+  author: string | null;
+  reason: string | null;
+  proposed: string;
+  recordId: string;
+  engineVersion: string;
+  contentHash: string;
+  links: { self: string; proposal: string; record: string };
+}
+
+/** A revision in full. */
+export interface RevisionShown extends RevisionHeadShown {
+  rival: { name: string; verdict: Verdict; levelsOver: number; levelsAll: number } | null;
+  inputs: { site: SiteDocument };
+  result: Result;
+}
+
+/** A job as the API gives it. */
+export interface JobShown {
+  id: number;
+  kind: 'plan' | 'assess';
+  state: 'queued' | 'running' | 'done' | 'failed' | 'cancelled';
+  progress: number;
+  error: ProblemJson | null;
+  revision: number | null;
+}
+
+export type { Remark };

@@ -1,0 +1,128 @@
+import { formatNumber, formatQuantity } from '#libs/present/format-number.js';
+import { formatMonth } from '#libs/present/local-stamp.js';
+import type { Result } from '#libs/engine/index.js';
+import { bankOf } from '../desk/desk-state.js';
+import { useDesk } from '../desk/use-desk.js';
+import { Bars } from '../draw/bars.js';
+import { Plot } from '../draw/plot.js';
+import { latestResult } from '../line/latest-result.js';
+import { NoRecord } from '../record/no-record.js';
+import { Headline } from '../working/headline.js';
+import { ControlFields } from './control-fields.js';
+import { ReplayFigure } from './replay-figure.js';
+import { RatioTable } from './ratio-table.js';
+import { StageFields } from './stage-fields.js';
+import { StagesFigure } from './stages-figure.js';
+
+/** The bank: stages as they stand, the year it works through, a day replayed. */
+export function BankSheet() {
+  const { state } = useDesk();
+  const { records, kept, charts } = state;
+  const result = latestResult(state);
+  if (records.length === 0) return <NoRecord what="A bank is laid out for a year of readings." />;
+  if (bankOf(state) === null) return <NoBank result={result} />;
+  if (result === null) return <h1>The bank is being computed</h1>;
+  const { operation, bank, control } = result;
+  const isTrial = state.trial !== null && kept !== null;
+  return (
+    <>
+      <Headline
+        figures={[
+          {
+            value: bank.effectiveKvar,
+            unit: 'kvar',
+            under: isTrial
+              ? `kept: ${formatQuantity(kept.result.bank.effectiveKvar, 'kvar')}`
+              : 'effective, all stages',
+            id: 'bank.effectiveKvar',
+          },
+          { value: control.setPointPowerFactor, under: 'set point', digits: 'given' },
+          {
+            value: operation.totalSwitchings,
+            under: isTrial
+              ? `switchings; kept: ${formatNumber(kept.result.operation.totalSwitchings, 'whole')}`
+              : 'switchings',
+            digits: 'whole',
+          },
+          {
+            value: operation.shareInTargetPct,
+            unit: '%',
+            under: isTrial
+              ? `in target; kept: ${formatQuantity(kept.result.operation.shareInTargetPct, '%')}`
+              : 'of the record in target',
+          },
+        ]}
+      >
+        {headline(result)}
+      </Headline>
+      <div className="split stages">
+        <StagesFigure />
+        <RatioTable />
+      </div>
+      <StageFields />
+      <ControlFields />
+      {charts.bank === undefined ? null : (
+        <>
+          <div className="split replay">
+            <ReplayFigure replay={charts.bank.replay} />
+            <Plot chart={charts.bank.phasors} height={240} />
+          </div>
+          <div className="split thirds">
+            <Bars figure={charts.bank.switchings} />
+            <Bars figure={charts.bank.hours} />
+            <Plot chart={charts.bank.months} height={220} working={['operation.lowestMonthPowerFactor']} />
+          </div>
+        </>
+      )}
+    </>
+  );
+}
+
+function headline({ bank, operation, requirement }: Result): string {
+  const count = bank.stages.length;
+  const stages = `${count === 1 ? 'One stage' : `${formatNumber(count, 'given')} stages`}, ${formatQuantity(bank.effectiveKvar, 'kvar')},`;
+  const target = formatNumber(requirement.targetPowerFactor, 'given');
+  const known = operation.months.flatMap(({ month, powerFactorLagging }) =>
+    powerFactorLagging === null ? [] : [{ month, factor: powerFactorLagging }],
+  );
+  const lowest = known.reduce<(typeof known)[number] | null>(
+    (a, b) => (a === null || b.factor < a.factor ? b : a),
+    null,
+  );
+  if (lowest === null) return `${stages} work through the record.`;
+  const factor = formatNumber(lowest.factor);
+  const missed = known.filter((month) => month.factor < requirement.targetPowerFactor * (1 - 1e-12)).length;
+  if (missed === 0)
+    return `${stages} hold every month above ${target}. ${formatMonth(lowest.month)} comes nearest, at ${factor}.`;
+  return `${stages} leave ${missed === known.length ? 'every month' : missed === 1 ? 'one month' : `${missed} months`} under ${target}; ${formatMonth(lowest.month)} by most, at ${factor}.`;
+}
+
+function NoBank({ result }: { result: Result | null }) {
+  const { desk, state } = useDesk();
+  const isBusy = state.saving || state.job !== null;
+  const isMet = result !== null && result.requirement.maxKvar <= 1e-9;
+  const metMonths = state.kept?.kind === 'plan';
+  return (
+    <>
+      <h1>
+        {isMet || metMonths
+          ? `No bank is needed: the site holds ${formatNumber(result?.requirement.targetPowerFactor ?? 0.95, 'given')} already.`
+          : 'No bank yet'}
+      </h1>
+      <p className="row gap">
+        <button type="button" className="button" disabled={isBusy} onClick={() => void desk.keep('plan')}>
+          Design a bank
+        </button>
+        <button
+          type="button"
+          className="button"
+          disabled={isBusy}
+          onClick={() => desk.tryBank({ stages: [{ count: 1, ratedKvar: 25, ratedV: 480, reactorPct: 7 }] })}
+        >
+          Add a stage
+        </button>
+        <span className="soft">Designed from the record and the supply, or stage by stage by hand.</span>
+      </p>
+    </>
+  );
+}

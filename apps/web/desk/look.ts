@@ -1,0 +1,94 @@
+import type { Problem, RecordSummary, Result } from '#libs/engine/index.js';
+import type { BarFigure } from '#libs/present/bar-figure.js';
+import type { Chart } from '#libs/present/chart.js';
+import type { DayReplay } from '#libs/present/day-replay.js';
+import type { Finding } from '#libs/present/findings.js';
+import type { SingleLine } from '#libs/present/single-line.js';
+import type { YearMap } from '#libs/present/year-map.js';
+import type { Verdict } from '#libs/engine/index.js';
+import type { Station } from '../address.js';
+import type { SiteDocument } from '../api/shown.js';
+
+/** What the reader has picked. */
+export interface Picks {
+  /** a moment of the day that is replayed [s] */
+  momentS: number | null;
+  /** second of that day under the cursor [s] */
+  cursorS: number;
+  /** the level drawn heavy [kvar] */
+  levelKvar: number | null;
+}
+
+/** A site file to be looked at. */
+export interface LookAsked {
+  document: SiteDocument;
+  kind: 'plan' | 'assess';
+  station: Station;
+  picks: Picks;
+  /** quick: what follows the hand, the peaks of |Z| left as they were */
+  depth: 'quick' | 'full';
+}
+
+/** The same stages at another reactor ratio. */
+export interface RatioRow {
+  reactorPct: number;
+  ratedV: number;
+  effectiveKvar: number;
+  tunedOrderH: number | null;
+  parallelOrderH: number | null;
+  harmonicVoltagePct: number | null;
+  capacitorVoltagePct: number | null;
+  capacitorCurrentPct: number | null;
+  verdict: Verdict;
+  isOwn: boolean;
+}
+
+/** Charts of the open station; the others' are made when they are opened. */
+export interface StationCharts {
+  record?: { year: YearMap };
+  supply?: { singleLine: SingleLine };
+  need?: { target: Chart; duration: Chart; year: YearMap };
+  bank?: { replay: DayReplay; phasors: Chart; switchings: BarFigure; hours: BarFigure; months: Chart; names: string[] };
+  network?: {
+    impedance: Chart;
+    margins: Chart;
+    rival: { name: string; impedance: Chart; margins: Chart; verdict: Verdict } | null;
+    duties: BarFigure;
+    levelsKvar: number[];
+  };
+}
+
+/** What the engine says of a site file, in words. */
+export interface Look {
+  depth: 'quick' | 'full';
+  result: Result;
+  proposed: string;
+  findings: Finding[];
+  highestV: number;
+  charts: StationCharts;
+  /** time the engine took [ms] */
+  tookMs: number;
+}
+
+/** The record's own columns for a trace, thinned by nobody. */
+export interface Trace {
+  beginS: Float64Array;
+  activeKw: Float32Array;
+  reactiveKvar: Float32Array;
+}
+
+export type DeskAsked =
+  | { ask: 'open'; ticket: number; columnsUrl: string; summary: RecordSummary; timeZone: string }
+  | { ask: 'look'; ticket: number; look: LookAsked }
+  | { ask: 'ratios'; ticket: number; look: LookAsked }
+  | { ask: 'warm'; ticket: number; look: LookAsked }
+  | { ask: 'trace'; ticket: number };
+
+export type DeskAnswered =
+  | { ticket: number; opened: true }
+  | { ticket: number; warm: true }
+  | { ticket: number; look: Look }
+  | { ticket: number; ratios: RatioRow[] }
+  | { ticket: number; trace: Trace }
+  | { ticket: number; problems: readonly Problem[] }
+  | { ticket: number; fault: string };

@@ -1,0 +1,300 @@
+import type { BankInput, Problem } from '#libs/engine/index.js';
+import type { Station } from '../address.js';
+import { ask, NoConnection, Refused } from '../api/ask.js';
+import type { RecordShown, RevisionHeadShown, RevisionShown, SiteShown } from '../api/shown.js';
+import { withValueAt } from '../field/document-path.js';
+import { clockNow } from './clock-now.js';
+import { InputRefused } from './desk-link.js';
+import { type DeskState, isChanged, NOTHING_YET, studiedDocument } from './desk-state.js';
+import { dropDraft, keepDraft, readDraft } from './draft.js';
+import { EngineDesk } from './engine-desk.js';
+import { followJob, type JobEnd, keptJob } from './follow-job.js';
+import type { Look, LookAsked, Picks, RatioRow, Trace } from './look.js';
+
+/** How long to wait for the first plan of a site whose plan is being made elsewhere [ms]. */
+const FIRST_PLAN_MS = 1500;
+
+/** Everything one site's page does: holds what is typed, asks the engine and the server, and says what came of it. */
+export class SiteDesk {
+  readonly siteId: string;
+  #state: DeskState = NOTHING_YET;
+  #station: Station = 'bank';
+  #engine: EngineDesk | null = null;
+  #engineRecord = '';
+  #full: Look | null = null;
+  #stopJob: (() => void) | null = null;
+  #closed = false;
+  readonly #listeners = new Set<() => void>();
+
+  constructor(siteId: string) {
+    this.siteId = siteId;
+  }
+
+  readonly subscribe = (changed: () => void): (() => void) => {
+    this.#listeners.add(changed);
+    return () => this.#listeners.delete(changed);
+  };
+
+  readonly state = (): DeskState => this.#state;
+
+  /** Loads the site, its records and its latest revision. */
+  async open(): Promise<void> {
+    try {
+      const site = (await ask<SiteShown>(this.#path())).body;
+      const draft = readDraft(this.siteId);
+      const isOlder = draft !== null && draft.version !== site.version;
+      this.#set({
+        site: isOlder ? { ...site, version: draft.version } : site,
+        document: draft?.document ?? site.site,
+        trial: draft?.trial ?? null,
+        theirs: isOlder ? site : null,
+      });
+      await this.#refresh();
+      this.#set({ stage: 'open' });
+      this.#prepareEngine();
+      this.#resumeJob();
+    } catch (error) {
+      this.#hear(error);
+      if (this.#state.stage === 'opening') this.#set({ stage: error instanceof Refused ? 'unknown' : 'unreachable' });
+    }
+  }
+
+  close(): void {
+    this.#closed = true;
+    this.#engine?.close();
+    this.#stopJob?.();
+  }
+
+  openStation(station: Station): void {
+    this.#station = station;
+    if (this.#engine !== null) this.#look(true);
+  }
+
+  /** A field was typed in: a value the document takes, or a text that is none yet. */
+  type(path: string, text: string, read: { value: unknown } | null): void {
+    const { [path]: _, ...others } = this.#state.typed;
+    if (read === null) {
+      this.#set({ typed: { ...others, [path]: text } });
+      return;
+    }
+    const document = withValueAt(this.#state.document!, path, read.value);
+    this.#set({ typed: others, document, problems: this.#state.problems.filter((problem) => problem.path !== path) });
+    this.#edited();
+  }
+
+  /** The bank under the hand; null puts the kept one back. */
+  tryBank(trial: BankInput | null): void {
+    this.#set({ trial });
+    this.#edited();
+  }
+
+  pick(picks: Partial<Picks>): void {
+    this.#set({ picks: { ...this.#state.picks, ...picks } });
+    if (this.#engine !== null) this.#look(false);
+  }
+
+  /** Puts everything back to what was kept. */
+  putBack(): void {
+    dropDraft(this.siteId);
+    this.#set({ document: this.#state.site!.site, trial: null, typed: {}, problems: [] });
+    if (this.#engine !== null) this.#look(true);
+  }
+
+  /**
+   * Saves what was typed and computes a revision from it.
+   * @param kind judge the bank as it stands, or design one
+   */
+  async keep(kind: 'plan' | 'assess'): Promise<void> {
+    this.#set({ saving: true, problems: [] });
+    try {
+      if (isChanged(this.#state)) await this.#save(kind);
+      const way = kind === 'plan' ? 'plans' : 'assessments';
+      const { body } = await ask<RevisionShown | { id: number }>(`${this.#path()}/${way}`, {
+        method: 'POST',
+        json: {},
+      });
+      this.#set({ offlineSince: null });
+      if ('contentHash' in body) await this.#kept();
+      else this.#follow(body.id);
+    } catch (error) {
+      await this.#hearSaving(error);
+    }
+    this.#set({ saving: false });
+  }
+
+  /**
+   * Reads a meter file into a record.
+   * @throws Refused with problems or questions
+   */
+  async upload(file: File, options: Record<string, string>): Promise<RecordShown> {
+    const query = new URLSearchParams({ name: file.name, ...options });
+    const asking = { method: 'POST' as const, body: file, headers: { 'content-type': 'application/octet-stream' } };
+    const { body } = await ask<RecordShown>(`${this.#path()}/records?${query}`, asking);
+    await this.#refresh();
+    this.#prepareEngine();
+    return body;
+  }
+
+  async cancelJob(): Promise<void> {
+    const { job } = this.#state;
+    if (job !== null) await ask(`/api/jobs/${job.id}`, { method: 'DELETE' }).catch((error) => this.#hear(error));
+  }
+
+  /** Of two versions: the other window's is taken, or this one goes on, built on theirs. */
+  settle(whose: 'theirs' | 'mine'): void {
+    const { theirs, document } = this.#state;
+    if (theirs === null) return;
+    if (whose === 'theirs') dropDraft(this.siteId);
+    const own = whose === 'mine' ? document : theirs.site;
+    this.#set({ site: theirs, document: own, theirs: null, ...(whose === 'theirs' ? { trial: null, typed: {} } : {}) });
+    this.#edited();
+  }
+
+  ratios(): Promise<RatioRow[]> {
+    return this.#engine === null ? Promise.resolve([]) : this.#engine.ratios(this.#asked());
+  }
+
+  trace(): Promise<Trace> | null {
+    return this.#engine?.trace() ?? null;
+  }
+
+  #path(): string {
+    return `/api/sites/${this.siteId}`;
+  }
+
+  async #save(kind: 'plan' | 'assess'): Promise<void> {
+    const { site, document, trial } = this.#state;
+    const studied = studiedDocument(this.#state);
+    // A bank under the hand becomes the site's own; a plan's bank stays the plan's.
+    const own = trial === null || kind === 'plan' ? document : { ...document, bank: studied?.bank ?? trial };
+    const { body } = await ask<SiteShown>(this.#path(), {
+      method: 'PUT',
+      json: own,
+      headers: { 'if-match': `"${site!.version}"` },
+    });
+    dropDraft(this.siteId);
+    this.#set({ site: body, document: body.site });
+  }
+
+  async #refresh(): Promise<void> {
+    const records = (await ask<{ records: RecordShown[] }>(`${this.#path()}/records`)).body.records;
+    const { revisions } = (await ask<{ revisions: RevisionHeadShown[] }>(`${this.#path()}/revisions`)).body;
+    const latest = revisions[0];
+    const kept = latest === undefined ? null : (await ask<RevisionShown>(latest.links.self)).body;
+    this.#set({ records, revisions, kept, offlineSince: null });
+    if (kept === null && records.length > 0 && !this.#closed) setTimeout(() => this.#lookAgain(), FIRST_PLAN_MS);
+  }
+
+  #lookAgain(): void {
+    if (this.#closed || this.#state.job !== null || this.#state.kept !== null) return;
+    this.#refresh()
+      .then(() => this.#state.kept !== null && this.#engine !== null && this.#look(true))
+      .catch((error) => this.#hear(error));
+  }
+
+  async #kept(): Promise<void> {
+    await this.#refresh();
+    this.#set({ trial: null, job: null });
+    this.#look(true);
+  }
+
+  #follow(jobId: number): void {
+    this.#stopJob?.();
+    this.#stopJob = followJob(this.siteId, jobId, {
+      moved: (job) => this.#set({ job }),
+      ended: (end) => void this.#ended(end),
+    });
+  }
+
+  #resumeJob(): void {
+    const jobId = keptJob(this.siteId);
+    if (jobId !== null) this.#follow(jobId);
+  }
+
+  async #ended(end: JobEnd): Promise<void> {
+    this.#set({ job: null });
+    if (end.state === 'failed' && end.error !== null)
+      this.#set({ problems: end.error.problems, fault: end.error.detail });
+    if (end.state === 'done') await this.#kept().catch((error) => this.#hear(error));
+  }
+
+  #edited(): void {
+    const { site, document, trial } = this.#state;
+    keepDraft(this.siteId, { version: site!.version, document: document!, trial });
+    if (this.#engine !== null) this.#look(false);
+  }
+
+  #prepareEngine(): void {
+    const record = this.#state.records[0];
+    if (record === undefined || record.id === this.#engineRecord) return;
+    this.#engine?.close();
+    this.#engineRecord = record.id;
+    const opened = {
+      columnsUrl: `${this.#path()}/records/${record.id}/columns`,
+      summary: record.record,
+      timeZone: this.#state.site!.site.timeZone,
+    };
+    this.#engine = new EngineDesk(opened, {
+      looked: (look, asked, tookMs) => this.#looked(look, asked, tookMs),
+      failed: (error) => this.#failed(error),
+    });
+    this.#look(true);
+  }
+
+  #asked(): LookAsked {
+    const { kept, trial, picks } = this.#state;
+    const kind = kept !== null && trial === null ? kept.kind : 'assess';
+    return { document: studiedDocument(this.#state)!, kind, station: this.#station, picks, depth: 'full' };
+  }
+
+  #look(isFullOnly: boolean): void {
+    this.#engine?.look(this.#asked(), isFullOnly);
+  }
+
+  #looked(look: Look, asked: LookAsked, tookMs: number): void {
+    if (look.depth === 'full') this.#full = look;
+    const full = this.#full;
+    const { bank, requirement, control, operation, verdict } = look.result;
+    const merged =
+      look.depth === 'full' || full === null
+        ? look
+        : { ...full, depth: look.depth, result: { ...full.result, bank, requirement, control, operation, verdict } };
+    this.#set({
+      look: merged,
+      charts: { ...this.#state.charts, ...look.charts },
+      fault: null,
+      problems: [],
+      ...(asked.depth === 'quick' ? { followedMs: tookMs } : {}),
+    });
+  }
+
+  #failed(error: Error): void {
+    if (error instanceof InputRefused) this.#set({ problems: error.problems });
+    else this.#set({ fault: error.message });
+  }
+
+  async #hearSaving(error: unknown): Promise<void> {
+    if (error instanceof Refused && error.problem.status === 412) {
+      const theirs = await ask<SiteShown>(this.#path()).catch(() => null);
+      if (theirs !== null) this.#set({ theirs: theirs.body });
+      return;
+    }
+    this.#hear(error);
+  }
+
+  #hear(error: unknown): void {
+    if (error instanceof NoConnection) {
+      this.#set({ offlineSince: this.#state.offlineSince ?? clockNow() });
+      return;
+    }
+    if (!(error instanceof Refused)) throw error;
+    const problems: readonly Problem[] = error.problem.problems;
+    this.#set({ problems, fault: problems.length === 0 ? error.problem.detail : null });
+  }
+
+  #set(part: Partial<DeskState>): void {
+    if (this.#closed) return;
+    this.#state = { ...this.#state, ...part };
+    for (const listener of this.#listeners) listener();
+  }
+}

@@ -1,0 +1,26 @@
+import type { Chart } from '#libs/present/chart.js';
+import { ChartFigure } from './chart-figure.js';
+import { ChartSvg, type PartStyles } from './chart-svg.js';
+import { usePlotWidth } from './plot-size.js';
+
+/** A chart of lines as a figure, as wide as its place. */
+export function Plot({
+  chart,
+  height,
+  styles,
+  working,
+}: {
+  chart: Chart;
+  height: number;
+  styles?: PartStyles;
+  working?: readonly string[];
+}) {
+  const [place, width] = usePlotWidth();
+  return (
+    <ChartFigure figure={chart} working={working}>
+      <div ref={place} className={chart.equalScales ? 'square' : undefined}>
+        {width === 0 ? null : <ChartSvg chart={chart} width={width} height={height} styles={styles} />}
+      </div>
+    </ChartFigure>
+  );
+}

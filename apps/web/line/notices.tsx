@@ -1,0 +1,41 @@
+import { useDesk } from '../desk/use-desk.js';
+import { DifferingFields } from './differing-fields.js';
+
+/** What stands in the way of keeping, above the open station: nothing typed is lost meanwhile. */
+export function Notices() {
+  const { desk, state } = useDesk();
+  const { offlineSince, theirs, fault, problems, typed } = state;
+  const general = problems.filter(({ path }) => path === undefined);
+  return (
+    <>
+      {offlineSince === null ? null : (
+        <p className="notice" role="alert">
+          Not saved: no connection since {offlineSince}. What you type is kept.{' '}
+          <button type="button" className="way" onClick={() => void desk.open()}>
+            Try again
+          </button>
+        </p>
+      )}
+      {theirs === null ? null : <DifferingFields />}
+      {fault === null ? null : (
+        <p className="notice" role="alert">
+          Not computed: {fault}
+        </p>
+      )}
+      {general.map(({ expected, found }) => (
+        <p className="notice" role="alert" key={expected}>
+          Refused: it needs {expected}; found {found}.
+        </p>
+      ))}
+      {problems.length === general.length ? null : (
+        <p className="notice" role="alert">
+          Refused at {[...new Set(problems.map(({ path }) => path ?? ''))].filter(Boolean).join(', ')}. The figures
+          below are those from before.
+        </p>
+      )}
+      {Object.keys(typed).length === 0 ? null : (
+        <p className="notice">A field is not readable yet; the figures below are those from before it.</p>
+      )}
+    </>
+  );
+}

@@ -1,0 +1,136 @@
+import { useState } from 'react';
+import type { Remark, Result } from '#libs/engine/index.js';
+import { formatQuantity, formatRange } from '#libs/present/format-number.js';
+import { messageOf, remarkConsequence } from '#libs/present/remark-words.js';
+import { siteAddress, stationOfPath } from '../address.js';
+import { useDesk } from '../desk/use-desk.js';
+import { latestResult } from './latest-result.js';
+
+/** One thing the plan rests on. */
+interface Point {
+  key: string;
+  text: string;
+  why: string;
+  path: string | null;
+  /** how far it moves the figure it moves most, where that was computed */
+  spread: number | null;
+  effect: string;
+}
+
+/** Everything the plan still rests on, in order of how far each moves the result, each opening its field. */
+export function OpenPoints({ siteId }: { siteId: string }) {
+  const { state } = useDesk();
+  const [isUnfolded, setUnfolded] = useState(false);
+  const result = latestResult(state);
+  const points = result === null ? [] : openPoints(result);
+  const most = Math.max(0, ...points.map(({ spread }) => spread ?? 0));
+  const deciding = points.filter(({ effect }) => effect === DECIDES).length;
+  return (
+    <aside className="rests" aria-label="What this plan still rests on">
+      <div className="earth">
+        <span className="segment" />
+        <EarthSymbol />
+        <div className="words">
+          <h2 className="word">What this plan still rests on</h2>
+          <span className="deciding">
+            {points.length} open {points.length === 1 ? 'point' : 'points'}
+          </span>
+          <span className="third caption">
+            {most > 0 ? `${deciding} could change the verdict` : 'effects not computed yet'}
+          </span>
+        </div>
+        <button
+          type="button"
+          className="rail-toggle"
+          aria-expanded={isUnfolded}
+          aria-label={`What this plan still rests on: ${points.length} open points`}
+          onClick={() => setUnfolded(!isUnfolded)}
+        >
+          {points.length}
+        </button>
+      </div>
+      <div className={isUnfolded ? 'points unfolded' : 'points'}>
+        <p className="caption">
+          {most > 0 ? 'In order of how far each moves the result.' : 'Findings first, then what was assumed.'} Open one
+          to settle it where it is entered.
+        </p>
+        <ul>
+          {points.map((point) => (
+            <PointRow key={point.key} point={point} most={most} siteId={siteId} />
+          ))}
+        </ul>
+      </div>
+    </aside>
+  );
+}
+
+function PointRow({ point, most, siteId }: { point: Point; most: number; siteId: string }) {
+  const { text, why, path, spread, effect } = point;
+  const share = spread === null || most === 0 ? 0 : Math.max(0.04, spread / most);
+  return (
+    <li className="point">
+      <div>
+        {spread === null ? (
+          <div className="measure unmeasured" />
+        ) : (
+          <div className="measure" style={{ width: `${72 * share}px` }} />
+        )}
+      </div>
+      <div>
+        {path === null ? text : <a href={siteAddress(siteId, stationOfPath(path), { field: path })}>{text}</a>}
+        <p>{why}</p>
+        {effect === '' ? null : <p>{effect}</p>}
+      </div>
+    </li>
+  );
+}
+
+function EarthSymbol() {
+  return (
+    <svg className="symbol" width="24" height="34" viewBox="0 0 24 34" aria-hidden="true">
+      <path d="M12 0V20M2 20H22M6 25H18M10 30H14" stroke="var(--ink)" strokeWidth="1.6" fill="none" />
+    </svg>
+  );
+}
+
+const DECIDES = 'Could change the verdict';
+
+/** Reasons, then the record's notes, then assumptions; those with a computed effect by its size. */
+export function openPoints({ reasons, record, assumptions, duties }: Result): Point[] {
+  const open = duties.filter(({ verdict }) => verdict === null).length;
+  const unjudged: Point[] =
+    open === 0
+      ? []
+      : [
+          {
+            key: 'unjudged',
+            text: `${open} ${open === 1 ? 'duty is' : 'duties are'} not judged`,
+            why: 'A limit or a load is missing.',
+            path: 'loads.distorting',
+            spread: null,
+            effect: '',
+          },
+        ];
+  const unsettled = reasons.filter(({ code }) => messageOf(code)?.level !== 'information');
+  const points = [...unsettled.map(pointOf), ...unjudged, ...record.notes.map(pointOf), ...assumptions.map(pointOf)];
+  return points
+    .map((point, at) => ({ ...point, key: `${at}:${point.key}` }))
+    .sort((a, b) => (b.spread ?? -1) - (a.spread ?? -1));
+}
+
+function pointOf(remark: Remark): Point {
+  const { code, path, text, effect } = remark;
+  return {
+    key: code,
+    text: text.replace(/\.$/, ''),
+    why: remarkConsequence(remark),
+    path,
+    spread: effect === null ? null : Math.abs(effect.high - effect.low),
+    effect: effect === null ? '' : effect.changesVerdict ? DECIDES : rangeWords(effect),
+  };
+}
+
+function rangeWords({ figure, low, high }: NonNullable<Remark['effect']>): string {
+  if (/kvar$/i.test(figure)) return `± ${formatQuantity(Math.abs(high - low) / 2, 'kvar')}`;
+  return formatRange({ low, high }, '', 'computed');
+}

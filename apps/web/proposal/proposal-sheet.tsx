@@ -1,0 +1,151 @@
+import { formatQuantity } from '#libs/present/format-number.js';
+import { NO_PERMISSION } from '#libs/present/verdict-words.js';
+import type { RevisionHeadShown } from '../api/shown.js';
+import { isChanged, staleFrom } from '../desk/desk-state.js';
+import { useDesk } from '../desk/use-desk.js';
+import { VerdictWords } from '../draw/verdict-mark.js';
+import { Headline } from '../working/headline.js';
+import { FindingsList } from './findings-list.js';
+
+/** The paper: preview, download, what changed since the last one. */
+export function ProposalSheet() {
+  const { desk, state } = useDesk();
+  const { kept, revisions, records, job, saving } = state;
+  if (kept === null) {
+    return (
+      <>
+        <h1>No proposal yet</h1>
+        <p className="row gap">
+          A proposal is made with each plan. {records.length === 0 ? 'A meter record is needed first.' : null}
+        </p>
+        {records.length === 0 ? null : (
+          <p className="row gap">
+            <button
+              type="button"
+              className="button"
+              disabled={job !== null || saving}
+              onClick={() => void desk.keep('plan')}
+            >
+              Design a bank
+            </button>
+          </p>
+        )}
+      </>
+    );
+  }
+  const { number, revision, proposed, verdict, links } = kept;
+  const isOlder = isChanged(state) || staleFrom(state) !== null;
+  return (
+    <>
+      <Headline
+        figures={[
+          { value: kept.result.bank.effectiveKvar, unit: 'kvar', under: 'effective', id: 'bank.effectiveKvar' },
+          { value: revision, under: 'revision, draft', digits: 'given' },
+        ]}
+      >
+        {kept.kind === 'plan' ? 'Proposed' : 'Judged'}: {proposed}
+      </Headline>
+      {isOlder ? (
+        <p className="notice">
+          The inputs have changed since this paper was made. Compute and keep makes the next one.
+        </p>
+      ) : null}
+      <section className="section" aria-labelledby="paper">
+        <h2 id="paper">
+          Proposal {number}, revision {revision}: draft, not reviewed
+        </h2>
+        <p className="row gap">
+          <VerdictWords verdict={verdict} />
+          <span className="soft">{NO_PERMISSION}</span>
+        </p>
+        <p className="row gap">
+          <a className="button filled" href={links.proposal} download={`${number}-revision-${revision}.pdf`}>
+            Download the proposal
+          </a>
+          <a href={links.proposal} target="_blank" rel="noreferrer">
+            Open it beside this page
+          </a>
+        </p>
+        <iframe
+          className="paper no-print"
+          src={`${links.proposal}#toolbar=0&view=FitH`}
+          title={`Proposal ${number}, revision ${revision}`}
+        />
+      </section>
+      <FindingsList />
+      <Changes revisions={revisions} />
+      <section className="section" aria-labelledby="papers">
+        <h2 id="papers">Every revision is kept</h2>
+        <Revisions revisions={revisions} />
+      </section>
+    </>
+  );
+}
+
+function Revisions({ revisions }: { revisions: readonly RevisionHeadShown[] }) {
+  return (
+    // biome-ignore lint/a11y/noNoninteractiveTabindex: a table that scrolls must be reached by keyboard
+    <section className="table" tabIndex={0} aria-label="Revisions">
+      <table>
+        <thead>
+          <tr>
+            {['revision', 'made', 'what', 'verdict', 'paper'].map((head) => (
+              <th key={head} scope="col">
+                {head}
+              </th>
+            ))}
+          </tr>
+        </thead>
+        <tbody>
+          {revisions.map((one) => (
+            <tr key={one.revision}>
+              <th scope="row">{one.revision}</th>
+              <td className="nowrap">{one.createdAt.slice(0, 16).replace('T', ' ')} UTC</td>
+              <td>
+                {one.kind === 'plan' ? 'Proposed' : 'Judged'}: {one.proposed}
+              </td>
+              <td>
+                <VerdictWords verdict={one.verdict} />
+              </td>
+              <td>
+                <a href={one.links.proposal}>PDF</a>
+              </td>
+            </tr>
+          ))}
+        </tbody>
+      </table>
+    </section>
+  );
+}
+
+/** What the last two revisions differ in, in the words both carry. */
+function Changes({ revisions }: { revisions: readonly RevisionHeadShown[] }) {
+  const { state } = useDesk();
+  const [now, before] = revisions;
+  if (now === undefined || before === undefined || state.kept === null) return null;
+  const kvar = formatQuantity(state.kept.result.bank.effectiveKvar, 'kvar');
+  return (
+    <section className="section" aria-labelledby="changes">
+      <h2 id="changes">What changed since revision {before.revision}</h2>
+      <div className="versions">
+        <div>
+          <p className="caption">revision {before.revision}</p>
+          <p>{before.proposed}</p>
+          <p className="row gap">
+            <VerdictWords verdict={before.verdict} />
+          </p>
+          {before.recordId === now.recordId ? null : <p className="soft">on another record</p>}
+        </div>
+        <div>
+          <p className="caption">
+            revision {now.revision}, {kvar}
+          </p>
+          <p>{now.proposed}</p>
+          <p className="row gap">
+            <VerdictWords verdict={now.verdict} />
+          </p>
+        </div>
+      </div>
+    </section>
+  );
+}

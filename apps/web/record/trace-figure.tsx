@@ -1,0 +1,104 @@
+import { useEffect, useRef, useState } from 'react';
+import type { Trace } from '../desk/look.js';
+import { useDesk } from '../desk/use-desk.js';
+import { usePlotWidth } from '../draw/plot-size.js';
+import { drawTrace, type TraceView } from './draw-trace.js';
+import { TracePyramid } from './trace-pyramid.js';
+import { useTheme } from '../theme.js';
+
+const HEIGHT = 240;
+
+/** The record itself, from the year to single intervals: the wheel zooms, dragging moves, arrow keys do both. */
+export function TraceFigure({ recordId }: { recordId: string }) {
+  const { desk } = useDesk();
+  const [trace, setTrace] = useState<Trace | null>(null);
+  const [place, width] = usePlotWidth();
+  // biome-ignore lint/correctness/useExhaustiveDependencies: another record is another trace
+  useEffect(() => {
+    let isCurrent = true;
+    void desk.trace()?.then((found) => isCurrent && setTrace(found));
+    return () => {
+      isCurrent = false;
+    };
+  }, [desk, recordId]);
+  return (
+    <section className="section" aria-labelledby="trace">
+      <h2 id="trace">The record, down to its intervals</h2>
+      <p className="caption">
+        Above kW, below kvar, lagging up. The wheel zooms, dragging moves; by keyboard + and − zoom, arrows move. Times
+        are UTC.
+      </p>
+      <div className="plot" ref={place} style={{ minHeight: HEIGHT }}>
+        {trace === null || width === 0 ? null : <TraceCanvas trace={trace} width={width} />}
+      </div>
+    </section>
+  );
+}
+
+function TraceCanvas({ trace, width }: { trace: Trace; width: number }) {
+  const canvas = useRef<HTMLCanvasElement | null>(null);
+  const [pyramids] = useState(() => ({
+    kw: new TracePyramid(trace.activeKw),
+    kvar: new TracePyramid(trace.reactiveKvar),
+  }));
+  const n = trace.beginS.length;
+  const view = useRef<TraceView>({ from: 0, to: n });
+  const theme = useTheme();
+  const draw = () => {
+    if (canvas.current !== null)
+      drawTrace(canvas.current, { trace, ...pyramids, view: view.current, width, height: HEIGHT });
+  };
+  // biome-ignore lint/correctness/useExhaustiveDependencies: drawn again for another width or theme
+  useEffect(draw, [width, theme, trace]);
+  const show = (from: number, span: number) => {
+    const kept = Math.max(Math.min(48, n), Math.min(n, span));
+    const start = Math.max(0, Math.min(n - kept, from));
+    view.current = { from: start, to: start + kept };
+    requestAnimationFrame(draw);
+  };
+  const zoom = (factor: number, at: number) => {
+    const { from, to } = view.current;
+    const span = (to - from) * factor;
+    show(from + (to - from - span) * at, span);
+  };
+  useEffect(() => {
+    const element = canvas.current;
+    const wheel = (event: WheelEvent) => {
+      event.preventDefault();
+      zoom(event.deltaY > 0 ? 1.2 : 1 / 1.2, event.offsetX / width);
+    };
+    element?.addEventListener('wheel', wheel, { passive: false });
+    return () => element?.removeEventListener('wheel', wheel);
+  });
+  const drag = useRef<{ x: number; from: number } | null>(null);
+  return (
+    <canvas
+      ref={canvas}
+      tabIndex={0}
+      role="img"
+      aria-label="The record's kW and kvar over time; + and − zoom, arrow keys move"
+      style={{ width, height: HEIGHT, display: 'block', cursor: 'grab', touchAction: 'pan-y' }}
+      onPointerDown={(event) => {
+        event.currentTarget.setPointerCapture(event.pointerId);
+        drag.current = { x: event.clientX, from: view.current.from };
+      }}
+      onPointerMove={({ clientX }) => {
+        if (drag.current === null) return;
+        const span = view.current.to - view.current.from;
+        show(drag.current.from - ((clientX - drag.current.x) / width) * span, span);
+      }}
+      onPointerUp={() => {
+        drag.current = null;
+      }}
+      onKeyDown={(event) => {
+        const span = view.current.to - view.current.from;
+        if (event.key === '+') zoom(1 / 1.5, 0.5);
+        else if (event.key === '-') zoom(1.5, 0.5);
+        else if (event.key === 'ArrowLeft') show(view.current.from - span / 8, span);
+        else if (event.key === 'ArrowRight') show(view.current.from + span / 8, span);
+        else return;
+        event.preventDefault();
+      }}
+    />
+  );
+}

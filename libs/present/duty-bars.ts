@@ -1,0 +1,74 @@
+import type { Corner, Duty } from '#libs/engine/index.js';
+import type { BarFigure } from './bar-figure.js';
+import { dutyName } from './figure-words.js';
+import { formatApart, formatNumber, formatQuantity, GAP } from './format-number.js';
+import { verdictWords } from './verdict-words.js';
+
+/** Bars end here and are drawn broken beyond [%]. */
+const BROKEN_PCT = 125;
+
+/**
+ * Every duty as a share of its own limit, so that unlike units compare; the harmonic voltages by their worst order.
+ * @param duties rows of the result
+ * @returns one bar a row, gravest first, rows without a limit in the table alone
+ */
+export function dutyBars(duties: readonly Duty[]): BarFigure {
+  const judged = duties.filter((duty) => duty.ratio !== null);
+  const worst = judged.reduce<Duty | null>((a, b) => (a === null || b.ratio! > a.ratio! ? b : a), null);
+  const over = judged.filter(({ verdict }) => verdict === 'avoid').length;
+  return {
+    id: 'dutyBars',
+    finding:
+      worst === null
+        ? 'No duty has a limit to be held against'
+        : over === 0
+          ? `Nearest its limit: ${dutyName(worst)}, ${formatQuantity(100 * worst.ratio!, '%')}`
+          : `${over} of ${judged.length} duties over their limits, ${dutyName(worst)} by most`,
+    caption: 'Value over limit, worst level and corner.',
+    sentence: judged.map((duty) => `${dutyName(duty)}: ${shareWords(duty)}, ${verdictWords(duty.verdict)}.`).join(' '),
+    bars: judged.map((duty) => {
+      const { value, limit } = formatApart(duty.value, duty.limit!);
+      return {
+        name: dutyName(duty),
+        value: 100 * duty.ratio!,
+        text: verdictWords(duty.verdict),
+        verdict: duty.verdict,
+        note: `${value} of ${limit}${GAP}${duty.unit}`,
+      };
+    }),
+    to: BROKEN_PCT,
+    limit: { at: 100, text: 'limit', dotted: false },
+    table: {
+      columns: ['duty', 'value', 'limit', 'share', 'level', 'corner', 'source', 'verdict'].map((head, at) => ({
+        head,
+        right: at > 0 && at < 5,
+      })),
+      rows: duties.map((duty) => [
+        dutyName(duty),
+        formatQuantity(duty.value, duty.unit),
+        duty.limit === null ? '–' : formatQuantity(duty.limit, duty.unit, 'given'),
+        duty.ratio === null ? '–' : formatQuantity(100 * duty.ratio, '%'),
+        formatQuantity(duty.levelKvar, 'kvar'),
+        cornerWords(duty.corner),
+        duty.source,
+        verdictWords(duty.verdict),
+      ]),
+    },
+  };
+}
+
+function shareWords(duty: Duty): string {
+  return `${formatQuantity(100 * duty.ratio!, '%')} of ${formatQuantity(duty.limit, duty.unit, 'given')}`;
+}
+
+/**
+ * A corner of the uncertain quantities in words.
+ * @param corner where a value was met
+ * @returns "180 MVA, C × 1.1, L × 0.97, damping 0 kW", or a dash
+ */
+export function cornerWords(corner: Corner | null): string {
+  if (corner === null) return '–';
+  const { faultLevelMva, capacitanceFactor, inductanceFactor, dampingKw } = corner;
+  const times = (factor: number) => `×${GAP}${formatNumber(factor, 'given')}`;
+  return `${formatQuantity(faultLevelMva, 'MVA', 'given')}, C ${times(capacitanceFactor)}, L ${times(inductanceFactor)}, damping ${formatQuantity(dampingKw, 'kW')}`;
+}
