@@ -8,6 +8,8 @@ export interface Bar {
   text: string;
   /** how it is filled; absent, as the bank's */
   verdict?: Verdict | null;
+  /** a dotted stroke: from here on it is near its limit */
+  nearAt?: number;
   /** stands under the number */
   note?: string;
 }

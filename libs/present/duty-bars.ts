@@ -1,4 +1,4 @@
-import type { Corner, Duty } from '#libs/engine/index.js';
+import { type Corner, type Duty, NEAR_RATIO } from '#libs/engine/index.js';
 import type { BarFigure } from './bar-figure.js';
 import { dutyName } from './figure-words.js';
 import { formatApart, formatNumber, formatQuantity, GAP } from './format-number.js';
@@ -33,6 +33,7 @@ export function dutyBars(duties: readonly Duty[]): BarFigure {
         value: 100 * duty.ratio!,
         text: verdictWords(duty.verdict),
         verdict: duty.verdict,
+        nearAt: 100 * nearRatio(duty.name),
         note: `${value} of ${limit}${GAP}${duty.unit}`,
       };
     }),
@@ -55,6 +56,12 @@ export function dutyBars(duties: readonly Duty[]): BarFigure {
       ]),
     },
   };
+}
+
+/** The share from which a duty of this name is near its limit; a discharge resistor is within it or not. */
+function nearRatio(name: string): number {
+  if (name === 'discharge') return 1;
+  return name.startsWith('capacitor voltage') ? NEAR_RATIO.voltage : NEAR_RATIO.other;
 }
 
 function shareWords(duty: Duty): string {

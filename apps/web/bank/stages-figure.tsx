@@ -31,13 +31,36 @@ export function StagesFigure() {
         <button type="button" className="way" onClick={() => change(withStageAdded(bank))}>
           Add a stage
         </button>
-        {state.trial === null ? null : (
+        {state.trial === null ? (
+          <OtherBanks />
+        ) : (
           <button type="button" className="way" onClick={() => desk.tryBank(null)}>
             Put the kept bank back
           </button>
         )}
       </p>
     </ChartFigure>
+  );
+}
+
+/** The ways to another bank: one designed for the record, or the one the site file holds beside a plan. */
+function OtherBanks() {
+  const { desk, state } = useDesk();
+  const own = state.document?.bank as BankInput | undefined;
+  const isBusy = state.saving || state.job !== null;
+  return (
+    <>
+      {state.kept?.kind === 'plan' ? null : (
+        <button type="button" className="way" disabled={isBusy} onClick={() => void desk.keep('plan')}>
+          Design a bank
+        </button>
+      )}
+      {state.kept?.kind === 'plan' && own !== undefined ? (
+        <button type="button" className="way" onClick={() => desk.tryBank(own)}>
+          Try the bank of the site file
+        </button>
+      ) : null}
+    </>
   );
 }
 

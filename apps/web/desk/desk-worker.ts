@@ -132,8 +132,9 @@ async function warmUp(studies: StudyCache, asked: LookAsked): Promise<void> {
   }
 }
 
-function traceOf({ record }: StudyCache): Trace {
+function traceOf({ record, zone }: StudyCache): Trace {
   return {
+    zone,
     beginS: record.beginS,
     activeKw: Float32Array.from(record.activeKw),
     reactiveKvar: Float32Array.from(record.laggingKvar, (lagging, i) => lagging - record.leadingKvar[i]!),

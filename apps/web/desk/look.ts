@@ -1,11 +1,10 @@
-import type { Problem, RecordSummary, Result } from '#libs/engine/index.js';
+import type { Problem, RecordSummary, Result, Verdict, ZoneTable } from '#libs/engine/index.js';
 import type { BarFigure } from '#libs/present/bar-figure.js';
 import type { Chart } from '#libs/present/chart.js';
 import type { DayReplay } from '#libs/present/day-replay.js';
 import type { Finding } from '#libs/present/findings.js';
 import type { SingleLine } from '#libs/present/single-line.js';
 import type { YearMap } from '#libs/present/year-map.js';
-import type { Verdict } from '#libs/engine/index.js';
 import type { Station } from '../address.js';
 import type { SiteDocument } from '../api/shown.js';
 
@@ -75,6 +74,8 @@ export interface Trace {
   beginS: Float64Array;
   activeKw: Float32Array;
   reactiveKvar: Float32Array;
+  /** the site's offsets */
+  zone: ZoneTable;
 }
 
 export type DeskAsked =

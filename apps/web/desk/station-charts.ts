@@ -137,7 +137,8 @@ function dayOfMost({ series }: Outcome): number {
 }
 
 function networkCharts(outcome: Outcome, picks: Picks): NonNullable<StationCharts['network']> {
-  const own = bankName(outcome.bank.groups);
+  const hasBank = outcome.bank.groups.length > 0;
+  const own = hasBank ? bankName(outcome.bank.groups) : 'No bank';
   const figure = impedanceOverOrder(outcome, outcome.bank, own);
   const levelKvar = picks.levelKvar ?? undefined;
   const duties = dutyBars(outcome.result.duties);
@@ -146,6 +147,7 @@ function networkCharts(outcome: Outcome, picks: Picks): NonNullable<StationChart
   const line = formatQuantity(picks.levelKvar ?? levelsKvar.at(-1) ?? 0, 'kvar');
   const explained = (chart: Chart, words: string): Chart => ({
     ...thinned(chart),
+    ...(hasBank ? {} : { finding: 'Impedance at the bus without a bank' }),
     caption: `${chart.caption} Band: all levels. Line: ${words}. Dashed: no bank. Ticks: each level’s peak, heavy near an order present.`,
   });
   if (outcome.rival === null) {

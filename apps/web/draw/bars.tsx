@@ -1,6 +1,7 @@
 import { useId } from 'react';
 import type { Bar, BarFigure } from '#libs/present/bar-figure.js';
 import { ChartFigure } from './chart-figure.js';
+import { textWidth } from './plot-box.js';
 import { usePlotWidth } from './plot-size.js';
 
 /** Bars on one scale as a figure; with verdicts, each bar is filled by its own. */
@@ -72,17 +73,19 @@ function NarrowSvg({ figure, width }: { figure: BarFigure; width: number }) {
   );
 }
 
-const TALL = 38;
-const NEAR_PCT = 80;
+/** Room for verdict and numbers beside the bars. */
+const SIDE = 112;
 
 /** Each duty's own limit is one line across all: unlike units compare. */
 function DutySvg({ figure, width }: { figure: BarFigure; width: number }) {
   const { bars, to } = figure;
   const hatch = useId();
-  const side = 112;
-  const scale = (width - side) / to;
+  const scale = (width - SIDE) / to;
   const limit = 100 * scale;
-  const height = bars.length * TALL + 24;
+  // A name that would run into its verdict takes a line of its own.
+  const lead = bars.some(({ name }) => textWidth(name) > width - SIDE) ? 15 : 0;
+  const tall = 38 + lead;
+  const height = bars.length * tall + 24;
   return (
     <svg width={width} height={height} aria-hidden="true">
       <defs>
@@ -96,27 +99,24 @@ function DutySvg({ figure, width }: { figure: BarFigure; width: number }) {
       </text>
       <path className="stroke-ink" strokeWidth="2" d={`M${limit} 16V${height}`} />
       {bars.map((bar, k) => (
-        <DutyRow key={bar.name} {...{ bar, hatch, width, scale, to }} y={18 + k * TALL} />
+        <DutyRow key={bar.name} {...{ bar, hatch, width, scale, to, lead }} y={18 + k * tall} />
       ))}
     </svg>
   );
 }
 
-function DutyRow({
-  bar,
-  hatch,
-  width,
-  scale,
-  to,
-  y,
-}: {
+interface DutyRowProps {
   bar: Bar;
   hatch: string;
   width: number;
   scale: number;
   to: number;
+  lead: number;
   y: number;
-}) {
+}
+
+function DutyRow({ bar, hatch, width, scale, to, lead, y: top }: DutyRowProps) {
+  const y = top + lead;
   const isBroken = bar.value > to;
   const end = Math.min(bar.value, to) * scale;
   const fill = bar.verdict === 'watch' ? `url(#${hatch})` : undefined;
@@ -124,13 +124,15 @@ function DutyRow({
     bar.verdict === 'avoid' ? 'fill-avoid' : bar.verdict === 'watch' ? 'stroke-watch' : 'fill-mid stroke-ink';
   return (
     <g>
-      <text className="halo" x={0} y={y + 12}>
+      <text className="halo" x={0} y={top + 12}>
         {bar.name}
       </text>
       <path className="grid" d={`M0 ${y + 28}H${to * scale}`} />
       <rect className={look} fill={fill} x={0.5} y={y + 18} width={Math.max(0, end - 0.5)} height={8} />
       {isBroken ? <path stroke="var(--sheet)" strokeWidth="1.6" d={`M${end - 12} ${y + 28}l6 -12m0 12l6 -12`} /> : null}
-      <path className="stroke-ink" strokeDasharray="1.5 2" d={`M${NEAR_PCT * scale} ${y + 16}v12`} />
+      {bar.nearAt === undefined ? null : (
+        <path className="stroke-ink" strokeDasharray="1.5 2" d={`M${bar.nearAt * scale} ${y + 16}v12`} />
+      )}
       <path className="stroke-ink" strokeWidth="2" d={`M${100 * scale} ${y + 15}v14`} />
       <MarkAt verdict={bar.verdict ?? null} x={width - 92} y={y + 2} />
       <text x={width} y={y + 12} textAnchor="end" className={bar.verdict === 'clear' ? '' : 'strong'}>

@@ -33,7 +33,7 @@ export function OpenPoints({ siteId }: { siteId: string }) {
         <div className="words">
           <h2 className="word">What this plan still rests on</h2>
           <span className="deciding">
-            {points.length} open {points.length === 1 ? 'point' : 'points'}
+            {result === null ? 'nothing computed' : `${points.length} open ${points.length === 1 ? 'point' : 'points'}`}
           </span>
           <span className="third caption">
             {most > 0 ? `${deciding} could change the verdict` : 'effects not computed yet'}

@@ -80,8 +80,8 @@ const FIGURES: Record<Station, (state: DeskState) => { figure: ReactNode; third:
   },
   supply: (state) => {
     const result = latestResult(state);
-    if (result === null) return { figure: 'not computed', third: 'transformer and loads' };
-    return { figure: <Quantity value={result.network.shortCircuitMva} unit="MVA" />, third: 'fault level at the bus' };
+    if (result === null) return { figure: 'not computed', third: 'supply, loads' };
+    return { figure: <Quantity value={result.network.shortCircuitMva} unit="MVA" />, third: 'at the bus' };
   },
   need: (state) => {
     const result = latestResult(state);
@@ -99,7 +99,8 @@ const FIGURES: Record<Station, (state: DeskState) => { figure: ReactNode; third:
   },
   network: (state) => {
     const result = latestResult(state);
-    if (result === null) return { figure: 'not computed', third: 'resonance and limits' };
+    if (result === null) return { figure: 'not computed', third: 'limits' };
+    if (bankOf(state) === null) return { figure: 'not judged', third: 'no bank yet' };
     return {
       figure: (
         <span className={`verdict ${result.verdict}`}>
@@ -118,6 +119,6 @@ const FIGURES: Record<Station, (state: DeskState) => { figure: ReactNode; third:
   },
   proposal: ({ kept }) =>
     kept === null
-      ? { figure: 'none yet', third: 'compute a plan first' }
+      ? { figure: 'none yet', third: 'plan first' }
       : { figure: <b>Rev. {kept.revision}</b>, third: 'draft' },
 };

@@ -1,4 +1,5 @@
 import { formatNumber } from '#libs/present/format-number.js';
+import { formatMoment } from '#libs/present/local-stamp.js';
 import { linearAxis, placeOnAxis } from '#libs/present/ticks.js';
 import type { Trace } from '../desk/look.js';
 import type { TracePyramid } from './trace-pyramid.js';
@@ -96,8 +97,7 @@ function drawTimes(pen: CanvasRenderingContext2D, { trace, view, width, height }
   const last = trace.beginS.length - 1;
   for (let k = 0; k <= count; k++) {
     const index = Math.min(last, Math.round(view.from + ((view.to - view.from) * k) / count));
-    const stamp = new Date(trace.beginS[index]! * 1000).toISOString();
     pen.textAlign = k === 0 ? 'left' : k === count ? 'right' : 'center';
-    pen.fillText(stamp.slice(0, 16).replace('T', ' '), LEFT + ((width - LEFT) * k) / count, height - 8);
+    pen.fillText(formatMoment(trace.zone, trace.beginS[index]!), LEFT + ((width - LEFT) * k) / count, height - 8);
   }
 }

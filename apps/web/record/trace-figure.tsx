@@ -26,7 +26,7 @@ export function TraceFigure({ recordId }: { recordId: string }) {
       <h2 id="trace">The record, down to its intervals</h2>
       <p className="caption">
         Above kW, below kvar, lagging up. The wheel zooms, dragging moves; by keyboard + and − zoom, arrows move. Times
-        are UTC.
+        are the site’s.
       </p>
       <div className="plot" ref={place} style={{ minHeight: HEIGHT }}>
         {trace === null || width === 0 ? null : <TraceCanvas trace={trace} width={width} />}
