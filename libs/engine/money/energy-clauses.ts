@@ -160,7 +160,7 @@ export function kvarhClause(ground: ClauseGround, clause: KvarhBeyondRatioClause
     carries: false,
     price(run) {
       slices.fill(0);
-      for (const reading of readings) excessesInto(slices, tiers, reading, basis, excessInto);
+      for (const reading of readings) excessesInto(slices, reading, { tiers, basis, excessInto });
       let amount = 0;
       let quantity = 0;
       for (const [k, tier] of tiers.entries()) {
@@ -187,13 +187,10 @@ export function kvarhClause(ground: ClauseGround, clause: KvarhBeyondRatioClause
 
 type ExcessInto = (slices: Float64Array, tiers: readonly Tier[], kvarh: number, kwh: number) => void;
 
-// five parameters: the sum over a reading's periods, called for every month of every candidate
 function excessesInto(
   slices: Float64Array,
-  tiers: readonly Tier[],
   reading: EnergyReading,
-  basis: ReactiveBasis,
-  excessInto: ExcessInto,
+  { tiers, basis, excessInto }: { tiers: readonly Tier[]; basis: ReactiveBasis; excessInto: ExcessInto },
 ): void {
   for (let period = 0; period < reading.periods; period++) {
     excessInto(slices, tiers, reading.reactiveKvarh(basis, period), reading.activeKwh[period]!);
