@@ -142,6 +142,7 @@ function revisionTable(type: Typed): Table {
       engineVersion: text(32),
       contentHash: HASH,
       result: 'text',
+      proposed: text(400),
       rival: { type: type('json'), isNullable: true },
       verdict: text(16),
       createdAt: type('instant'),

@@ -1,7 +1,11 @@
 import { readMeterMap } from '#libs/contract/meter-map-schema.js';
+import { isTimeZone } from '#libs/contract/time-zone.js';
+import { InputProblem } from '#libs/engine/index.js';
+import { FORMATS } from '#libs/meter-files/formats.js';
 import type { MeterReading } from '#libs/meter-files/meter-format.js';
 import { readMeterFile } from '#libs/meter-files/read-meter-file.js';
 import type { CommandLine } from './command.js';
+import { usage } from './command-line.js';
 import { openInput, readJson } from './input-file.js';
 import { inFile } from './refused-file.js';
 
@@ -13,6 +17,7 @@ import { inFile } from './refused-file.js';
  * @returns the record and how good its file was
  */
 export async function readMeterRecord(line: CommandLine, path: string, siteTimeZone?: string): Promise<MeterReading> {
+  checkOptions(line);
   const mapPath = line.values.get('map');
   const map =
     mapPath === undefined ? undefined : await inFile(mapPath, async () => readMeterMap(await readJson(mapPath)));
@@ -26,6 +31,22 @@ export async function readMeterRecord(line: CommandLine, path: string, siteTimeZ
       ...present('sizeBytes', sizeBytes),
     });
   });
+}
+
+/** A format or a zone that doesn't exist is a slip of the keyboard, whatever the file holds. */
+function checkOptions({ values }: CommandLine): void {
+  const names = FORMATS.map(({ name }) => name);
+  const format = values.get('format');
+  const zone = values.get('time-zone');
+  const problems = [
+    ...(format === undefined || names.includes(format)
+      ? []
+      : [usage(`--format with one of ${names.join(', ')}`, JSON.stringify(format))]),
+    ...(zone === undefined || isTimeZone(zone)
+      ? []
+      : [usage('--time-zone with a zone such as "Europe/Dublin", "UTC" or "+10:00"', JSON.stringify(zone))]),
+  ];
+  if (problems.length > 0) throw new InputProblem(problems);
 }
 
 function present<K extends string, T>(key: K, value: T | undefined): { [P in K]?: T } {

@@ -1,7 +1,7 @@
 import { EXIT } from '#libs/contract/error-body.js';
 import { InputProblem, summarizeRecord } from '#libs/engine/index.js';
 import { recordColumns } from '#libs/meter-files/record-columns.js';
-import { writeRecordCsv } from '#libs/meter-files/write-record-csv.js';
+import { recordCsvChunks } from '#libs/meter-files/write-record-csv.js';
 import { recordInWords } from '#libs/present/put-in-words.js';
 import { recordReport } from '#libs/present/terminal-report.js';
 import type { CommandLine } from './command.js';
@@ -18,7 +18,7 @@ export async function run(line: CommandLine): Promise<number> {
   const { record, quality } = await readMeterRecord(line, line.operand);
   const summary = recordInWords(summarizeRecord(record));
   if (flags.has('csv')) {
-    await write(writeRecordCsv(record));
+    for (const chunk of recordCsvChunks(record)) await write(chunk);
   } else if (flags.has('intervals')) {
     await writeJson({ record: summary, quality, columns: recordColumns(record) });
   } else if (flags.has('json')) {

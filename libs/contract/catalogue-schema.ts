@@ -1,5 +1,6 @@
 import * as z from 'zod';
 import {
+  CAPACITOR_V,
   label,
   listOf,
   NOT_NEGATIVE,
@@ -14,7 +15,7 @@ import {
 /** What a bank may be built from. */
 export const catalogueSchema = z.strictObject({
   stageKvar: listOf(quantity('stageKvar', POSITIVE), 1, 60).optional(),
-  ratedV: listOf(quantity('ratedV', POSITIVE), 1, 40).optional(),
+  ratedV: listOf(quantity('ratedV', CAPACITOR_V), 1, 40).optional(),
   reactorPct: listOf(reactorPct(), 1, 20).optional(),
   maxStages: whole(1, 24).optional(),
   cabinets: listOf(
@@ -36,6 +37,6 @@ export const catalogueSchema = z.strictObject({
   evenSteps: z.boolean().optional(),
   maxTotalKvar: quantity('maxTotalKvar', POSITIVE).optional(),
   setPoints: listOf(plain(POWER_FACTOR), 1, 40).optional(),
-  interStageUh: quantity('interStageUh', NOT_NEGATIVE).optional(),
+  interStageUh: quantity('interStageUh', POSITIVE).optional(),
   mustMeetTarget: z.boolean().optional(),
 });

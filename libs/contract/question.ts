@@ -24,10 +24,15 @@ export interface QuestionAsked {
 export class Question extends InputProblem {
   readonly questions: readonly QuestionAsked[];
 
-  constructor(questions: readonly QuestionAsked[]) {
+  /**
+   * @param questions what is in doubt
+   * @param place row and column of the file that raise it, where one does
+   */
+  constructor(questions: readonly QuestionAsked[], place: { row?: number; column?: number } = {}) {
     super(
       questions.map((question) => ({
         code: 'question' as const,
+        ...place,
         expected: `an answer: ${question.about}`,
         found: `${question.readings.length} readings`,
       })),

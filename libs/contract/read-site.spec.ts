@@ -107,6 +107,7 @@ const refused: [why: string, json: unknown, path: string | undefined, code: stri
     'out-of-range',
   ],
   ['negative p', withStage({ reactorPct: -7 }), 'bank.stages[0].reactorPct', 'out-of-range'],
+  ['volts of a capacitor that is none', withStage({ ratedV: 50 }), 'bank.stages[0].ratedV', 'out-of-range'],
   ['half a stage', withStage({ count: 1.5 }), 'bank.stages[0].count', 'out-of-range'],
   ['a bank without stages', siteWith({ bank: { stages: [] } }), 'bank.stages', 'out-of-range'],
   ['a negative capacitance', withStage({ capacitanceUf: -1 }), 'bank.stages[0].capacitanceUf', 'out-of-range'],
@@ -217,11 +218,11 @@ describe('a site file', () => {
     const json = withTransformer(
       { ratedKva: 'x', impedancePct: -1 },
       {
-        bus: { nominalV: 400, highestV: 1 },
+        bus: { nominalV: 400, highestV: 100 },
         rules: 4,
         extra: 1,
         recordedBank: { state: 'on' },
-        bank: { stages: [{ count: 0.5, ratedKvar: 1, ratedV: 1 }] },
+        bank: { stages: [{ count: 0.5, ratedKvar: 1, ratedV: 480 }] },
       },
     );
     expect(problemsOf(json).map(({ path }) => path)).toEqual([

@@ -14,6 +14,8 @@ export interface Range {
 /** More than 0, and large enough to divide by. */
 export const POSITIVE: Range = { above: 0, min: 1e-9 };
 export const NOT_NEGATIVE: Range = { min: 0 };
+/** Below about 53 V a capacitor's peak is under the 75 V a discharge has to reach: no power capacitor. */
+export const CAPACITOR_V: Range = { min: 60, max: 1e6 };
 export const POWER_FACTOR: Range = { above: 0, min: 1e-3, max: 1 };
 
 const LARGEST = 1e12;

@@ -63,7 +63,7 @@ function problemsOfIssue(issue: Issue, json: unknown): Problem[] {
     return issue.keys.map((key) => ({
       code: 'unknown-key',
       path: pathText([...issue.path, key]),
-      expected: 'a key of the contract',
+      expected: 'a known key',
       found: shown(key),
     }));
   }

@@ -4,6 +4,7 @@ import { catalogueSchema } from './catalogue-schema.js';
 import { financeSchema } from './finance-schema.js';
 import { pricesSchema } from './prices-schema.js';
 import {
+  CAPACITOR_V,
   currency,
   label,
   listOf,
@@ -26,8 +27,8 @@ const PERCENT: Range = { min: 0, max: 100 };
 const DELAY: Range = { min: 0, max: 31_536_000 };
 
 const bus = z.strictObject({
-  nominalV: quantity('nominalV', { above: 0, min: 1, max: 1e6 }),
-  highestV: quantity('highestV', { above: 0, min: 1, max: 1e6 }).optional(),
+  nominalV: quantity('nominalV', { min: 50, max: 1e6 }),
+  highestV: quantity('highestV', { min: 50, max: 1e6 }).optional(),
 });
 
 const recordedBank = z.discriminatedUnion('state', [
@@ -96,7 +97,7 @@ const loads = z.strictObject({
 const stageGroup = z.strictObject({
   count: whole(1, 100),
   ratedKvar: quantity('ratedKvar', POSITIVE),
-  ratedV: quantity('ratedV', POSITIVE),
+  ratedV: quantity('ratedV', CAPACITOR_V),
   reactorPct: reactorPct().optional(),
   reactorQuality: plain(POSITIVE).optional(),
   dischargeOhm: quantity('dischargeOhm', POSITIVE).optional(),
@@ -109,7 +110,7 @@ const stageGroup = z.strictObject({
 
 const bank = z.strictObject({
   stages: listOf(stageGroup, 1, 24),
-  interStageUh: quantity('interStageUh', NOT_NEGATIVE).optional(),
+  interStageUh: quantity('interStageUh', POSITIVE).optional(),
   ambientCategory: z.enum(['A', 'B', 'C', 'D']).optional(),
   switchKind: label().optional(),
 });

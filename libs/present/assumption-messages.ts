@@ -88,4 +88,19 @@ export const ASSUMPTION_MESSAGES: Messages = {
     'X/R of the reactors is {value} at the fundamental, as is customary.',
     'Read the reactor’s data sheet.',
   ),
+  'default.catalogue.stageKvar': assumed(
+    'Stages come in the common preferred sizes, 5 to 100 kvar.',
+    'List what can be bought.',
+  ),
+  'default.catalogue.ratedV': assumed(
+    'Capacitors come for the common voltages, 230 to 800 V.',
+    'List what can be bought.',
+  ),
+  'default.catalogue.reactorPct': assumed('Reactor ratios are 0, 5.67, 7 or 14 %.', 'List what can be bought.'),
+  'default.catalogue.maxStages': assumed('A bank has at most 12 stages.', 'Say how many ways the controller has.'),
+  'bank.ignored': assumed(
+    'The site’s own bank lends nothing to this plan.',
+    'Judge it for itself, or say what was connected while the record was taken.',
+  ),
+  'money.unused': assumed('Given and not used yet: {name}.', 'Costs and savings are not computed in this edition.'),
 };

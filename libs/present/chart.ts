@@ -21,11 +21,11 @@ export type Part = 'site' | 'need' | 'after' | 'bank' | 'without' | 'beyond' | '
 
 /**
  * A row of values. line: from point to point; stair: each value holds to the next x; wash: filled from `base` up;
- * hatch: the same, hatched. NaN leaves a gap.
+ * washStair: the same under a stair; hatch: the same, hatched. NaN leaves a gap.
  */
 export interface Series {
   part: Part;
-  shape: 'line' | 'stair' | 'wash' | 'hatch';
+  shape: 'line' | 'stair' | 'wash' | 'washStair' | 'hatch';
   x: ArrayLike<number>;
   y: ArrayLike<number>;
   /** lower edge of a fill, else the axis' lower end */

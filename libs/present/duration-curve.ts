@@ -12,14 +12,12 @@ const LISTED_PCT = [0, 1, 2, 5, 10, 25, 50, 75, 90, 100];
  * @returns chart; the gap between line and stair is what the bank leaves
  */
 export function durationCurve(outcome: Outcome): Chart {
-  const need = Float64Array.from(outcome.series.needKvar).sort().reverse();
+  const need = outcome.series.needKvar.slice().sort().reverse();
   const n = need.length;
   const levels = outcome.result.bank.levelsKvar;
   const top = levels.at(-1) ?? 0;
   const { maxKvar, p99Kvar, p95Kvar } = outcome.result.requirement;
-  const share = Float64Array.from(need, (_, i) => (n === 1 ? 0 : (100 * i) / (n - 1)));
-  const reached = Float64Array.from(need, (kvar) => levelUnder(levels, kvar));
-  const beyond = need.map((kvar) => (kvar > top ? kvar : Number.NaN));
+  const { share, reached, beyond, floor } = columnsOf(need, levels);
   const target = formatNumber(outcome.site.targetPowerFactor, 'given');
   return {
     id: 'durationCurve',
@@ -37,14 +35,8 @@ export function durationCurve(outcome: Outcome): Chart {
     y: linearAxis('needed', 'kvar', { least: 0, most: Math.max(maxKvar, top) }),
     equalScales: false,
     series: [
-      { part: 'bank', shape: 'wash', x: share, y: reached },
-      {
-        part: 'beyond',
-        shape: 'hatch',
-        x: share,
-        y: beyond,
-        base: beyond.map((kvar) => (Number.isNaN(kvar) ? kvar : top)),
-      },
+      { part: 'bank', shape: 'washStair', x: share, y: reached },
+      { part: 'beyond', shape: 'hatch', x: share, y: beyond, base: floor },
       { part: 'site', shape: 'line', x: share, y: need },
     ],
     marks: [...pointMarks(outcome), ...levelMarks(levels, top)],
@@ -66,6 +58,32 @@ export function durationCurve(outcome: Outcome): Chart {
   };
 }
 
+/** Columns of the chart over the sorted need; the level under it only falls, so one pass finds it. */
+function columnsOf(need: Float64Array, levelsKvar: readonly number[]) {
+  const n = need.length;
+  const columns = {
+    share: new Float64Array(n),
+    reached: new Float64Array(n),
+    beyond: new Float64Array(n),
+    floor: new Float64Array(n),
+  };
+  const top = levelsKvar.at(-1) ?? 0;
+  let at = levelsKvar.length - 1;
+  for (let i = 0; i < n; i++) {
+    const kvar = need[i]!;
+    while (at > 0 && !fitsUnder(levelsKvar[at]!, kvar)) at--;
+    columns.share[i] = n === 1 ? 0 : (100 * i) / (n - 1);
+    columns.reached[i] = levelsKvar[at] ?? 0;
+    columns.beyond[i] = kvar > top ? kvar : Number.NaN;
+    columns.floor[i] = kvar > top ? top : Number.NaN;
+  }
+  return columns;
+}
+
+function fitsUnder(levelKvar: number, kvar: number): boolean {
+  return levelKvar <= kvar * (1 + 1e-12);
+}
+
 function finding(outcome: Outcome, top: number): string {
   const { maxKvar } = outcome.result.requirement;
   const most = formatQuantity(maxKvar, 'kvar');
@@ -80,7 +98,7 @@ function finding(outcome: Outcome, top: number): string {
 /** The greatest level at or below a need. */
 function levelUnder(levelsKvar: readonly number[], kvar: number): number {
   let level = 0;
-  for (const step of levelsKvar) if (step <= kvar * (1 + 1e-12)) level = step;
+  for (const step of levelsKvar) if (fitsUnder(step, kvar)) level = step;
   return level;
 }
 

@@ -2,6 +2,7 @@ import {
   admittanceSquareInto,
   type Bank,
   bankLevels,
+  type CornerCase,
   networkModel,
   networkTable,
   type Outcome,
@@ -72,13 +73,29 @@ function scanBank(outcome: Outcome, bank: Bank, endH: number): Scan {
   const stages = bank.groups.map((group) =>
     stageAdmittance(stageBranch(group, factors, supply.resistanceExponent), ordersH),
   );
-  const finder = new PeakFinder(model, bank);
+  const peakOf = bank === outcome.bank ? knownPeaks(outcome) : foundPeaks(new PeakFinder(model, bank), nominal);
   const levels = spread(bankLevels(bank, nominalV)).map(({ levelKvar, vectors }) => {
     const square = new Float64Array(count);
     admittanceSquareInto(bus, stages, vectors[0]!, square);
-    return { levelKvar, ohm: square.map((y) => 1 / Math.sqrt(y)), peak: finder.greatest(vectors[0]!, nominal) };
+    return { levelKvar, ohm: square.map((y) => 1 / Math.sqrt(y)), peak: peakOf(levelKvar, vectors[0]!) };
   });
   return { ordersH, levels };
+}
+
+type PeakOf = (levelKvar: number, vector: Int32Array) => Scan['levels'][number]['peak'];
+
+/** The outcome has its own bank's peaks already. */
+function knownPeaks(outcome: Outcome): PeakOf {
+  const nominal = outcome.result.network.levels.filter((level) => level.case === 'nominal');
+  return (levelKvar) => {
+    const level = nominal.find((one) => Math.abs(one.levelKvar - levelKvar) < 1e-6);
+    if (level?.parallelOrderH == null || level.peakOhm === null) return null;
+    return { orderH: level.parallelOrderH, impedanceOhm: level.peakOhm };
+  };
+}
+
+function foundPeaks(finder: PeakFinder, nominal: CornerCase): PeakOf {
+  return (_, vector) => finder.greatest(vector, nominal);
 }
 
 function spread<T>(levels: readonly T[]): T[] {

@@ -1,4 +1,98 @@
-import type { Messages } from './message.js';
+import type { FindingLevel, Messages } from './message.js';
+
+/** A decision that every valid reading shares, or that the file itself states. */
+function told(text: string, consequence = ''): Messages[string] {
+  return { level: 'information', text, consequence };
+}
+
+/** A decision or a loss that a planner should look at. */
+function noted(text: string, consequence: string, level: FindingLevel = 'to be noted'): Messages[string] {
+  return { level, text, consequence };
+}
 
 /** What the reader of a meter file decided, repaired or left out. */
-export const NOTE_MESSAGES: Messages = {};
+export const NOTE_MESSAGES: Messages = {
+  'file-read-as': told('The file was read as {format}: {columns}.', 'See that each column is what it says.'),
+  'encoding-converted': told('The file’s letters were converted from {encoding}.'),
+  'rows-before-header': told('{rows:row stands|rows stand} before the header and were left out.'),
+  'header-repeated': told('The header is repeated in {rows:row|rows}, which were left out.'),
+  'total-rows-left-out': told('{rows:row of totals was|rows of totals were} left out.'),
+  'decimal-mark-settled': told('The decimal mark is “{mark}”; every other reading fails.'),
+  'thousands-divided': told('{numbers:number has|numbers have} a mark between thousands.'),
+  'date-order-settled': told('Dates are in the order {order}; every other reading fails.'),
+  'rows-newest-first': told('The rows stand newest first; {rows:row was|rows were} turned round.'),
+  'rows-put-in-order': noted(
+    '{rows:row stood|rows stood} out of order and were put in place.',
+    'Ask how the file was made.',
+  ),
+  'duplicates-dropped': noted(
+    '{rows:identical repeat was|identical repeats were} dropped.',
+    'Nothing is lost by it.',
+    'information',
+  ),
+  'conflicting-rows-settled': noted(
+    '{rows:row repeats|rows repeat} an interval with another value; the {kept} was kept, as asked.',
+    'Ask which of them the bill used.',
+  ),
+  'intervals-without-value': noted(
+    '{intervals:interval has|intervals have} no value and were left out.',
+    'Missing is not zero; find out why.',
+  ),
+  'zone-assumed-utc': noted(
+    'No zone was given, so stamps were taken as UTC.',
+    'Give the zone: days and months depend on it.',
+  ),
+  'zone-from-header': told('The header states the zone {zone}.'),
+  'stamps-assumed-beginnings': noted(
+    'Nothing says whether a stamp marks the beginning or the end of its interval; beginnings were assumed.',
+    'Ask; the other reading moves every month by one interval.',
+  ),
+  'stamps-mark-ends': told('Stamps mark the end of their interval: {because}.'),
+  'midnight-under-ending-day': told('Midnight is written under the day that ends in {rows:row|rows}.'),
+  'doubled-hour-by-order': told('{rows:row|rows} of the doubled autumn hour were told apart by their order.'),
+  'doubled-hour-once': noted(
+    'The doubled autumn hour stands once in the file, in {rows:row|rows}; its first pass was taken.',
+    'One hour is missing there.',
+  ),
+  'skipped-hour-left-out': noted(
+    '{rows:row stands|rows stand} in the hour that spring skips and were left out.',
+    'Ask whether the meter’s clock follows summer time.',
+  ),
+  'unit-read-as-mega': noted(
+    'A small m was read as mega, not milli, in: {columns}.',
+    'See that the figures are of the right size.',
+  ),
+  'reactive-in-kilowatt': noted(
+    'Reactive columns are named in kW or kWh and were taken as kvar or kvarh: {columns}.',
+    'See that they are reactive.',
+  ),
+  'leading-not-recorded': noted(
+    'The file has no leading kvar; they were taken as none.',
+    'Over-correction in the record would not show.',
+  ),
+  'reactive-sign-taken': told(
+    'Lagging kvar were taken as {lagging}; {negative:value is|values are} negative.',
+    'See that the sign is so.',
+  ),
+  'reactive-never-leading': told('The signed reactive column is nowhere negative; all of it was taken as lagging.'),
+  'export-subtracted': told('Exported power ({column}) was subtracted from imported.'),
+  'voltage-taken-line-to-line': noted('Voltage ({column}) was taken as line to line.', 'See that it is of that size.'),
+  'intervals-repaired': noted(
+    '{intervals:interval was|intervals were} filled by {method}, as asked.',
+    'They are not measured.',
+  ),
+  'nem12-time': told('NEM12 keeps its own time, UTC{zone}, all year.'),
+  'nem12-header-missing': noted('The NEM12 header record is missing.', 'The file may have been cut.'),
+  'nem12-end-missing': noted('The NEM12 end record is missing.', 'The file may have been cut.'),
+  'nem12-streams-added': told('Streams {streams} were added up as {quantity}.'),
+  'nem12-streams-left-out': told('Streams {streams} are not energy and were left out.'),
+  'nem12-substituted': noted(
+    '{values:value is|values are} substituted or estimated by the meter’s owner.',
+    'They are not measured.',
+  ),
+  'nem12-null': noted('{values:value is|values are} flagged as null and were left out.', 'Missing is not zero.'),
+  'nem12-quality-unstated': noted(
+    '{values:value carries|values carry} no statement of quality.',
+    'They were taken as actual.',
+  ),
+};

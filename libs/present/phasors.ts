@@ -1,5 +1,5 @@
 import type { Outcome } from '#libs/engine/index.js';
-import type { Chart, Mark } from './chart.js';
+import type { Axis, Chart, Mark } from './chart.js';
 import { formatNumber, formatQuantity, MINUS } from './format-number.js';
 import { formatMoment } from './local-stamp.js';
 import { linearAxis } from './ticks.js';
@@ -39,13 +39,21 @@ export function phasors(outcome: Outcome): Chart {
       `Voltage U points right. The load’s current, ${amperes(before)}, ${angleWords(load)}. ` +
       `The capacitors’ current, ${amperes(moment.bankKvar * perKva)}, leads U by 90° and points up. ` +
       `Their sum, the supply’s current, is ${amperes(after)} and ${angleWords(sum)}.`,
-    x: linearAxis('in phase', 'A', { least: 0, most: reach.x * 1.05 }, 4),
-    y: linearAxis('lagging downwards', 'A', { least: reach.down, most: reach.up }, 4),
+    x: within(linearAxis('in phase', 'A', { least: 0, most: reach.x }, 4), { from: 0, to: reach.x * 1.3 }),
+    y: within(linearAxis('lagging downwards', 'A', { least: reach.down, most: reach.up }, 4), {
+      from: reach.down * 1.12,
+      to: reach.up + 0.06 * reach.x,
+    }),
     equalScales: true,
     series: [],
     marks: arrows(load, sum, moment.bankKvar * perKva),
     table: phasorTable(moment, { load, sum }),
   };
+}
+
+/** The same axis between ends that need not be round. */
+function within(axis: Axis, ends: { from: number; to: number }): Axis {
+  return { ...axis, ...ends, ticks: axis.ticks.filter(({ at }) => at >= ends.from && at <= ends.to) };
 }
 
 /** The worst interval, or the one of greatest need where none misses the target. */
@@ -82,7 +90,12 @@ function arrows(load: [number, number], sum: [number, number], bankA: number): M
     bank: label('bank', [load[0], (load[1] + sum[1]) / 2], bankA),
     sum: label('supply', sum, Math.hypot(...sum)),
   };
-  const marks: Mark[] = [{ kind: 'arrow', from: [0, 0], to: load, part: 'site' }];
+  const along = 1.2 * Math.max(Math.hypot(...load), Math.hypot(...sum), 1);
+  const marks: Mark[] = [
+    { kind: 'arrow', from: [0, 0], to: [along, 0], part: 'beyond' },
+    { kind: 'label', x: along, y: 0, text: 'U', side: 'above', part: 'beyond' },
+    { kind: 'arrow', from: [0, 0], to: load, part: 'site' },
+  ];
   if (bankA > 0) {
     marks.push({ kind: 'arrow', from: load, to: sum, part: 'bank' });
     marks.push({ kind: 'label', x: ends.bank.x, y: ends.bank.y, text: ends.bank.name, side: 'right', part: 'bank' });
@@ -94,22 +107,24 @@ function arrows(load: [number, number], sum: [number, number], bankA: number): M
 }
 
 function phasorTable(moment: Moment, ends: { load: [number, number]; sum: [number, number] }): Chart['table'] {
-  const row = (name: string, kw: number, kvar: number, amperes: number) => [
-    name,
-    formatNumber(kw),
-    formatNumber(kvar),
-    formatNumber(Math.hypot(kw, kvar)),
-    formatNumber(amperes),
-    Math.hypot(kw, kvar) > 0 ? formatNumber(Math.abs(kw) / Math.hypot(kw, kvar)) : '–',
-  ];
   const { kw, loadKvar, bankKvar } = moment;
-  const bankA = ends.sum[1] - ends.load[1];
+  const parts = [
+    { kw, kvar: loadKvar, amperes: Math.hypot(...ends.load) },
+    { kw: 0, kvar: -bankKvar, amperes: ends.sum[1] - ends.load[1] },
+    { kw, kvar: loadKvar - bankKvar, amperes: Math.hypot(...ends.sum) },
+  ];
+  const row = (name: string, value: (part: (typeof parts)[number]) => number | null) => [
+    name,
+    ...parts.map((part) => formatQuantity(value(part), '')),
+  ];
   return {
-    columns: ['', 'kW', 'kvar, lagging', 'kVA', 'A', 'cos φ'].map((head, at) => ({ head, right: at > 0 })),
+    columns: ['', 'load', 'bank', 'supply'].map((head, at) => ({ head, right: at > 0 })),
     rows: [
-      row('load', kw, loadKvar, Math.hypot(...ends.load)),
-      row('bank', 0, -bankKvar, bankA),
-      row('supply', kw, loadKvar - bankKvar, Math.hypot(...ends.sum)),
+      row('kW', (part) => part.kw),
+      row('kvar, lagging', (part) => part.kvar),
+      row('kVA', (part) => Math.hypot(part.kw, part.kvar)),
+      row('A', (part) => part.amperes),
+      row('cos φ', (part) => (part.kw === 0 ? null : Math.abs(part.kw) / Math.hypot(part.kw, part.kvar))),
     ],
   };
 }

@@ -1,6 +1,6 @@
 import type { Outcome } from '#libs/engine/index.js';
 import type { Chart, Mark } from './chart.js';
-import { formatNumber } from './format-number.js';
+import { formatApart, formatNumber } from './format-number.js';
 import { formatMonth, monthLetters } from './local-stamp.js';
 import { niceStep } from './ticks.js';
 
@@ -32,7 +32,10 @@ export function powerFactorByMonth(outcome: Outcome): Chart {
       scale: 'linear',
       from: -0.5,
       to: months.length - 0.5,
-      ticks: months.map(({ month }, at) => ({ at, text: monthLetters(month) })),
+      ticks: months.map(({ month }, at) => ({
+        at,
+        text: months.length > 8 ? monthLetters(month)[0]! : monthLetters(month),
+      })),
     },
     y: factorAxis(Math.min(...known, target)),
     equalScales: false,
@@ -40,7 +43,7 @@ export function powerFactorByMonth(outcome: Outcome): Chart {
     marks: months.flatMap(monthMarks),
     table: {
       columns: ['month', 'before', 'after'].map((head, at) => ({ head, right: at > 0 })),
-      rows: months.map(({ month, before, after }) => [formatMonth(month), number(before), number(after)]),
+      rows: months.map(({ month, before, after }) => [formatMonth(month), number(before), beside(after, target)]),
     },
   };
 }
@@ -56,6 +59,11 @@ function monthPairs(outcome: Outcome): MonthPair[] {
 
 function number(value: number | null): string {
   return value === null ? '–' : formatNumber(value);
+}
+
+/** A factor barely under the target takes more digits, so that it does not read as met. */
+function beside(value: number | null, target: number): string {
+  return value === null ? '–' : formatApart(value, target).value;
 }
 
 function factorAxis(least: number): Chart['y'] {

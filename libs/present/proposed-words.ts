@@ -10,9 +10,8 @@ import { formatNumber, formatQuantity, GAP } from './format-number.js';
 export function proposedWords(outcome: Outcome): string {
   const { bank, result, site } = outcome;
   if (bank.groups.length === 0) {
-    return result.requirement.maxKvar <= 1e-9
-      ? `no bank. The site holds ${formatNumber(site.targetPowerFactor, 'given')} already.`
-      : 'no bank.';
+    const none = result.reasons.some(({ code }) => code === 'layout.noCandidate');
+    return none ? 'nothing.' : `no bank. The site holds ${formatNumber(site.targetPowerFactor, 'given')} already.`;
   }
   const stages = bank.groups.reduce((sum, { count }) => sum + count, 0);
   const own = outcome.kind === 'assess' ? 'the site’s own bank, ' : '';

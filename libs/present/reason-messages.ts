@@ -1,31 +1,31 @@
 import type { Messages } from './message.js';
 
-const WHERE = '[ of group {group}][ at order {orderH}]';
+const WHERE = '[, group {group}][, order {orderH}]';
 const MET = '[, met with {levelKvar} connected][, fault level {faultLevelMva}][, damping load {dampingKw}]';
 
 /** Why a verdict is what it is. */
 export const REASON_MESSAGES: Messages = {
   'limit.exceeded': {
     level: 'blocks issue',
-    text: `{duty}${WHERE} is over its limit: {value} against {limit}${MET}.`,
+    text: `Over its limit: {duty}${WHERE}, {value} against {limit}${MET}.`,
     subject: `{duty}${WHERE}${MET}`,
     consequence: 'Change the bank or the network until the limit is kept.',
   },
   'limit.near': {
     level: 'to be accepted',
-    text: `{duty}${WHERE} is near its limit: {value} against {limit}${MET}.`,
+    text: `Near its limit: {duty}${WHERE}, {value} against {limit}${MET}.`,
     subject: `{duty}${WHERE}${MET}`,
     consequence: 'Accept the margin, or change the bank.',
   },
   'limit.exceededAlready': {
     level: 'to be accepted',
-    text: `{duty}${WHERE} is exceeded without the bank already: {value} against {limit}${MET}. The bank adds little to it.`,
+    text: `Exceeded without the bank already: {duty}${WHERE}, {value} against {limit}${MET}; the bank adds little to it.`,
     subject: `{duty}${WHERE}${MET}. Exceeded without the bank already.`,
     consequence: 'Settle the distortion at its sources; the bank does not mend it.',
   },
   'inrush.assumedInductance': {
     level: 'to be accepted',
-    text: `{duty}${WHERE} is over its limit with an assumed inductance between stages: {value} against {limit}.`,
+    text: `Over its limit with an assumed inductance between stages: {duty}${WHERE}, {value} against {limit}.`,
     subject: `{duty}${WHERE}${MET}. The inductance between stages is assumed.`,
     consequence: 'Give the inductance between stages, or fit reactors or an inrush-limiting switch.',
   },
@@ -100,5 +100,30 @@ export const REASON_MESSAGES: Messages = {
     level: 'to be accepted',
     text: 'The stated reactor ratio, {statedPct}, disagrees with the nameplate’s capacitance and inductance, {derivedPct}, which was used.',
     consequence: 'Read the nameplates again.',
+  },
+  'need.metEveryMonth': {
+    level: 'information',
+    text: 'Single intervals need up to {maxKvar}, and yet the target {targetPowerFactor} is met in every month without a bank.',
+    consequence: 'No bank is needed for the target.',
+  },
+  'layout.noCandidate': {
+    level: 'blocks issue',
+    text: 'The catalogue holds no bank that could be built for this site.',
+    consequence: 'Widen the list of sizes, voltages or reactor ratios, or the most stages.',
+  },
+  'layout.onlyWatch': {
+    level: 'to be accepted',
+    text: 'No bank of the catalogue meets the target with every limit clear of its threshold; the nearest is proposed.',
+    consequence: 'Accept what stands near a limit, or widen the catalogue.',
+  },
+  'layout.targetOutOfReach': {
+    level: 'to be accepted',
+    text: 'No bank of the catalogue meets the target in every month; the nearest is proposed.',
+    consequence: 'Allow more stages, larger ones or more kvar, or accept the months that stay short.',
+  },
+  'layout.onlyAvoid': {
+    level: 'blocks issue',
+    text: 'Every bank of the catalogue is over a limit; the nearest is shown.',
+    consequence: 'Widen the catalogue, or settle the distortion at its sources.',
   },
 };

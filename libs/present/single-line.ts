@@ -1,10 +1,13 @@
 import type { Outcome, StageGroup } from '#libs/engine/index.js';
 import { formatNumber, formatQuantity, formatRange, GAP } from './format-number.js';
+import { plainName } from './plain-name.js';
 
 /** A feeder of the board with its trade symbol and what is known of it. */
 export interface Feeder {
   symbol: 'motor' | 'converter' | 'load';
   name: string;
+  /** stands for a name that is too long to be drawn */
+  short: string;
   detail: string;
 }
 
@@ -75,23 +78,37 @@ function feeders({ site, result }: Outcome): Feeder[] {
   const { motorSharePct, distorting } = site.loads;
   const motors: Feeder[] =
     motorSharePct > 0
-      ? [{ symbol: 'motor', name: 'motors', detail: `${formatQuantity(motorSharePct, '%', 'given')} of damping load` }]
+      ? [
+          {
+            symbol: 'motor',
+            name: 'motors',
+            short: 'motors',
+            detail: `${formatQuantity(motorSharePct, '%', 'given')} of damping load`,
+          },
+        ]
       : [];
   const loads = distorting ?? [];
   const each = loads.slice(0, loads.length > MOST_LOADS ? MOST_LOADS - 1 : MOST_LOADS);
   const rest = loads.slice(each.length);
-  const converters: Feeder[] = each.map(({ name, fundamentalA, spectrum, orders }) => ({
+  const converters: Feeder[] = each.map(({ name, fundamentalA, spectrum, orders }, at) => ({
     symbol: 'converter',
-    name,
+    name: plainName(name),
+    short: `load ${at + 1}`,
     detail: `${formatQuantity(fundamentalA, 'A', 'given')}, ${orders === undefined ? (spectrum ?? 'orders given').replaceAll('-', ' ') : 'orders given'}`,
   }));
   if (rest.length > 0) {
     const sumA = rest.reduce((sum, { fundamentalA }) => sum + fundamentalA, 0);
-    converters.push({ symbol: 'converter', name: `${rest.length} more`, detail: formatQuantity(sumA, 'A', 'given') });
+    converters.push({
+      symbol: 'converter',
+      name: `${rest.length} more`,
+      short: `${rest.length} more`,
+      detail: formatQuantity(sumA, 'A', 'given'),
+    });
   }
   const other: Feeder = {
     symbol: 'load',
     name: 'other load',
+    short: 'other load',
     detail: `site at most ${formatQuantity(result.record.maxKw, 'kW')}`,
   };
   return [...motors, ...converters, other];

@@ -129,7 +129,7 @@ function clockAxis(outcome: Outcome, day: DayOfRecord): Chart['x'] {
 function daySeries(columns: DayColumns): Series[] {
   const zero = columns.x.map(() => 0);
   return [
-    { part: 'bank', shape: 'wash', x: columns.x, y: columns.connected, base: zero },
+    { part: 'bank', shape: 'washStair', x: columns.x, y: columns.connected, base: zero },
     { part: 'need', shape: 'stair', x: columns.x, y: columns.need },
     { part: 'after', shape: 'stair', x: columns.x, y: columns.after },
     { part: 'site', shape: 'stair', x: columns.x, y: columns.load },

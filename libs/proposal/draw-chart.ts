@@ -41,7 +41,7 @@ export function drawChart(paper: Paper, chart: Chart, box: Box): void {
 }
 
 function isFill({ shape }: Series): boolean {
-  return shape === 'wash' || shape === 'hatch';
+  return shape === 'wash' || shape === 'washStair' || shape === 'hatch';
 }
 
 function rightMargin(paper: Paper, chart: Chart): number {
@@ -111,9 +111,8 @@ function drawFill(paper: Paper, series: Series, frame: PlotFrame): void {
   const { plot } = frame;
   const upper = stretches(points(series, frame, series.y));
   const lower = series.base === undefined ? null : stretches(points(series, frame, series.base));
-  const stair = series.part === 'bank' && series.shape === 'wash' && series.base !== undefined;
   upper.forEach((stretch, at) => {
-    const top = stair ? stepped(stretch) : stretch;
+    const top = series.shape === 'washStair' ? stepped(stretch) : stretch;
     const floor = lower?.[at] ?? [
       [stretch[0]![0], plot.y + plot.height],
       [stretch.at(-1)![0], plot.y + plot.height],
@@ -121,13 +120,25 @@ function drawFill(paper: Paper, series: Series, frame: PlotFrame): void {
     const outline = [...top, ...[...floor].reverse()];
     doc.save();
     doc.polygon(...outline);
-    if (series.shape === 'wash') doc.fill(WASH);
+    if (series.shape !== 'hatch') doc.fill(WASH);
     else {
       doc.clip();
       hatch(doc, plot, 3.2);
     }
     doc.restore();
+    if (series.shape === 'washStair') edge(paper, top);
   });
+}
+
+/** A thin line along the top of a stair, so that its levels can be told apart. */
+function edge(paper: Paper, path: readonly [number, number][]): void {
+  const { doc } = paper;
+  doc.lineWidth(STROKE.grid);
+  for (const [at, [x, y]] of path.entries()) {
+    if (at === 0) doc.moveTo(x, y);
+    else doc.lineTo(x, y);
+  }
+  doc.stroke(SOFT);
 }
 
 function drawMark(paper: Paper, mark: Mark, frame: PlotFrame): void {
@@ -145,6 +156,7 @@ function drawMark(paper: Paper, mark: Mark, frame: PlotFrame): void {
       return;
     case 'tick': {
       const x = atX(mark.x);
+      if (x > plot.x + plot.width) return;
       doc.lineWidth(mark.heavy ? 2 : STROKE.tick);
       doc
         .moveTo(x, plot.y - 3)

@@ -20,6 +20,8 @@ import type { Style } from './typesetter.js';
 const LOADS_SHARE = 0.54;
 const MOST_TRANSFORMERS = 3;
 const ABOVE_BUS = 116;
+/** A name that takes more lines goes by its number in the list of loads. */
+const MOST_NAME_LINES = 3;
 const FEEDER_DROP = 20;
 const STAGE_DROP = 12;
 
@@ -35,14 +37,15 @@ export interface SetDiagram {
  * @returns height and a function that draws it at a place
  */
 export function setSingleLine(paper: Paper, diagram: SingleLine, width: number): SetDiagram {
-  const above = diagram.transformers.length === 0 ? ABOVE_BUS - 36 : ABOVE_BUS;
+  const primary = diagram.meteredAt === 'primary' ? 11 : 0;
+  const above = (diagram.transformers.length === 0 ? ABOVE_BUS - 36 : ABOVE_BUS) + primary;
   const feeders = diagram.feeders.map((feeder) =>
     setFeeder(paper, feeder, (LOADS_SHARE * width) / diagram.feeders.length),
   );
   const bank = diagram.bank.flatMap((line) => paper.type.wrap([line], ON_CHART, (1 - LOADS_SHARE) * width - 6));
   const below = Math.max(
     ...feeders.map(({ height }) => height),
-    diagram.stages.length > 0 ? 74 + bank.length * leading(ON_CHART) : 0,
+    diagram.stages.length > 0 ? bankTextDrop(diagram) + bank.length * leading(ON_CHART) : 0,
   );
   const height = above + below + leading(AXIS) + 4;
   return {
@@ -60,7 +63,7 @@ export function setSingleLine(paper: Paper, diagram: SingleLine, width: number):
           });
           drawBank(paper, diagram, { box, busY: y + above });
           bank.forEach((line, n) => {
-            paper.type.draw(line, x + width - line.width, y + above + 72 + n * leading(ON_CHART));
+            paper.type.draw(line, x + width - line.width, y + above + bankTextDrop(diagram) + n * leading(ON_CHART));
           });
           paper.type.put([diagram.notEntered], AXIS, x, y + height - 3);
         },
@@ -68,6 +71,12 @@ export function setSingleLine(paper: Paper, diagram: SingleLine, width: number):
       );
     },
   };
+}
+
+/** From the bus down to the first line under the stages [pt]. */
+function bankTextDrop(diagram: SingleLine): number {
+  const stageHeight = diagram.stages.some(({ detuned }) => detuned) ? 40 : 30;
+  return STAGE_DROP + 8 + stageHeight + 25;
 }
 
 interface Place {
@@ -82,9 +91,9 @@ function drawSupply(paper: Paper, diagram: SingleLine, { box, busY }: Place): vo
   const gridEnd = drawGrid(doc, { x, y: box.y });
   type.put([diagram.grid], ON_CHART, x + 13, box.y + 11);
   const shown = diagram.transformers.slice(0, MOST_TRANSFORMERS);
-  const tap = gridEnd + 9;
+  const tap = gridEnd + (diagram.meteredAt === 'primary' ? 20 : 9);
   drawConductor(doc, { x, y: gridEnd }, { x, y: tap });
-  if (diagram.meteredAt === 'primary') meterBeside(paper, { x, y: gridEnd + 6 });
+  if (diagram.meteredAt === 'primary') meterBeside(paper, { x, y: gridEnd + 9 });
   let y = tap;
   if (shown.length > 0) {
     const pitch = 30;
@@ -100,7 +109,7 @@ function drawSupply(paper: Paper, diagram: SingleLine, { box, busY }: Place): vo
       y = shown.length > 1 ? end + 4 : end;
     });
     if (shown.length > 1) drawConductor(doc, { x: first, y }, { x: last, y });
-    labelTransformers(paper, diagram, { x: last + 14, y: tap + 12 });
+    labelTransformers(paper, diagram, { x: last + 14, y: tap + 14 });
   }
   drawConductor(doc, { x, y }, { x, y: busY });
   drawBreaker(doc, { x, y: y + 5 });
@@ -149,7 +158,8 @@ interface SetFeeder {
 
 function setFeeder(paper: Paper, feeder: Feeder, width: number): SetFeeder {
   const { doc, type } = paper;
-  const names = type.wrap([feeder.name], ON_CHART, width - 8);
+  const wrapped = type.wrap([feeder.name], ON_CHART, width - 8);
+  const names = wrapped.length <= MOST_NAME_LINES ? wrapped : type.wrap([feeder.short], ON_CHART, width - 8);
   const details = type.wrap([feeder.detail], AXIS, width - 8);
   const symbolEnd = FEEDER_DROP + 18;
   return {

@@ -56,16 +56,26 @@ export interface Run {
  * @returns runs in order; a character that no font draws is shown by its code, "U+65E5", never left blank
  */
 export function splitRuns(text: string, fonts: readonly string[], covers: Coverage): Run[] {
-  const runs: Run[] = [];
-  for (const cluster of clusters(text)) {
+  const parts = clusters(text).map((cluster) => {
     const font = fonts.find((name) => coversAll(name, cluster, covers));
-    const piece = font === undefined ? codeOf(cluster) : cluster;
-    const name = font ?? fonts[0]!;
+    return font === undefined ? { text: codeOf(cluster), font: fonts[0]! } : { text: cluster, font };
+  });
+  const runs: Run[] = [];
+  parts.forEach(({ text: piece, font }, at) => {
     const last = runs.at(-1);
-    if (last?.font === name) last.text += piece;
-    else runs.push({ font: name, text: piece });
-  }
+    const next = parts[at + 1];
+    // a gap between two words of one script stays in their font, so that they are shaped together
+    const bridges =
+      isGap(piece) && last !== undefined && last.font === next?.font && covers(last.font, piece.codePointAt(0)!);
+    const own = bridges ? last.font : font;
+    if (last?.font === own) last.text += piece;
+    else runs.push({ font: own, text: piece });
+  });
   return runs;
+}
+
+function isGap(text: string): boolean {
+  return text === ' ' || text === '\u00a0';
 }
 
 /** A letter with the marks that follow it. */

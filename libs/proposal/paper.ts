@@ -41,23 +41,32 @@ export class Paper {
   readonly right: number;
   readonly width: number;
   readonly bottom: number;
+  /** where the content of every page begins [pt] */
+  top = 0;
   /** where the next block begins, from the top [pt] */
-  y: number;
+  y = 0;
   private readonly parents: PDFKit.PDFStructureElement[];
 
-  constructor(
-    readonly doc: PDFKit.PDFDocument,
-    readonly top: number,
-  ) {
+  constructor(readonly doc: PDFKit.PDFDocument) {
     const { width, height } = doc.page;
     this.type = new Typesetter(doc);
     this.right = width - SIDE;
     this.width = this.right - SIDE;
     this.bottom = height - FOOT;
-    this.y = top;
     const root = doc.struct('Document');
     doc.addStructure(root);
     this.parents = [root];
+  }
+
+  /** Sets where the content of every page begins, below the header. */
+  begin(top: number): void {
+    this.top = top;
+    this.y = top;
+  }
+
+  /** Closes the tree. */
+  end(): void {
+    for (const element of this.parents) element.end();
   }
 
   /** @returns height left on this page [pt] */

@@ -17,6 +17,8 @@ export const ON_CHART: Style = { ...BODY, size: 8.6 };
 
 /** Where values stand on the page. */
 export interface PlotFrame {
+  /** what the whole chart may take */
+  box: Box;
   plot: Box;
   atX(value: number): number;
   atY(value: number): number;
@@ -44,6 +46,7 @@ export function plotFrame(paper: Paper, chart: Chart, box: Box, margins: Margins
   };
   if (chart.equalScales) plot = squared(chart, plot);
   return {
+    box,
     plot,
     atX: (value) => plot.x + placeOnAxis(chart.x, value) * plot.width,
     atY: (value) => plot.y + plot.height - placeOnAxis(chart.y, value) * plot.height,
@@ -80,7 +83,7 @@ export function drawAxes(paper: Paper, chart: Chart, frame: PlotFrame): void {
 }
 
 /** The horizontal axis: its line at zero where zero is in sight, strokes and texts below the plot. */
-function drawBase(paper: Paper, chart: Chart, { plot, atX, atY }: PlotFrame): void {
+function drawBase(paper: Paper, chart: Chart, { box, plot, atX, atY }: PlotFrame): void {
   const { doc, type } = paper;
   const base = plot.y + plot.height;
   const zero = chart.y.scale === 'linear' && chart.y.from < 0 && chart.y.to > 0 ? atY(0) : base;
@@ -99,7 +102,8 @@ function drawBase(paper: Paper, chart: Chart, { plot, atX, atY }: PlotFrame): vo
       .stroke(INK);
     if (!shown.has(tick)) continue;
     const style: Style = tick.strong === true ? { ...AXIS, ink: INK, weight: 'semibold' } : AXIS;
-    type.put([tick.text], style, x - type.width([tick.text], style) / 2, base + 13);
+    const width = type.width([tick.text], style);
+    type.put([tick.text], style, Math.min(x - width / 2, box.x + box.width - width), base + 13);
   }
   if (chart.x.label === '') return;
   const label = chart.x.unit === '' ? chart.x.label : `${chart.x.label}, ${chart.x.unit}`;

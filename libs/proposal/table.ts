@@ -2,10 +2,13 @@ import { HAIR, INK, STROKE } from './ink.js';
 import { LABEL, leading, type Paper, rise } from './paper.js';
 import { BODY, type Line, type Piece, type Style } from './typesetter.js';
 
-/** A column: its heading, its share of the width, and how its cells stand. */
+/** A column: its heading, its width, and how its cells stand. */
 export interface Column {
   head: string;
+  /** of the width that fixed columns leave */
   share: number;
+  /** width [pt], in place of a share */
+  fixed?: number;
   align?: 'left' | 'right';
 }
 
@@ -28,6 +31,8 @@ export interface TableSetting {
   width?: number;
   /** above and below the text of a row [pt] */
   padding?: number;
+  /** between columns [pt] */
+  gutter?: number;
   after?: number;
 }
 
@@ -105,13 +110,15 @@ function cellStyle(style: Style, column: Column): Style {
 }
 
 function placeColumns(paper: Paper, columns: readonly Column[], setting: TableSetting): Place[] {
-  const total = columns.reduce((sum, { share }) => sum + share, 0);
-  const free = (setting.width ?? paper.width) - GUTTER * (columns.length - 1);
+  const gutter = setting.gutter ?? GUTTER;
+  const shares = columns.reduce((sum, { share, fixed }) => sum + (fixed === undefined ? share : 0), 0);
+  const taken = columns.reduce((sum, { fixed }) => sum + (fixed ?? 0), gutter * (columns.length - 1));
+  const free = (setting.width ?? paper.width) - taken;
   let x = setting.x ?? paper.left;
-  return columns.map(({ share, align }) => {
-    const width = (free * share) / total;
+  return columns.map(({ share, fixed, align }) => {
+    const width = fixed ?? (free * share) / shares;
     const place = { x, width, right: align === 'right' };
-    x += width + GUTTER;
+    x += width + gutter;
     return place;
   });
 }

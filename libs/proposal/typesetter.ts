@@ -1,7 +1,8 @@
 import type {} from 'pdfkit';
-import { plainName } from '#libs/present/plain-name.js';
+import { printable } from '#libs/present/plain-name.js';
 import { type Run, shippedFonts, splitRuns, type Weight } from './fonts.js';
 import { INK } from './ink.js';
+import { layOutQuickly, type OpenFont } from './quick-layout.js';
 
 /** How a piece of text looks. */
 export interface Style {
@@ -41,6 +42,7 @@ const SOFT_BREAK = /(?<=[-/_.,;:@+&])/u;
 export class Typesetter {
   private readonly widths = new Map<string, number>();
   private readonly covered = new Map<string, boolean>();
+  private readonly open = new Map<string, OpenFont>();
   private readonly fonts: Record<Weight, string[]>;
 
   constructor(private readonly doc: PDFKit.PDFDocument) {
@@ -183,21 +185,29 @@ export class Typesetter {
     const key = `${font} ${codePoint}`;
     let answer = this.covered.get(key);
     if (answer === undefined) {
-      this.doc.font(font);
-      // pdfkit's types leave out the open font, which alone knows its glyphs
-      const open = this.doc as unknown as { _font: { font: { hasGlyphForCodePoint(codePoint: number): boolean } } };
-      answer = open._font.font.hasGlyphForCodePoint(codePoint);
+      answer = this.openFont(font).hasGlyphForCodePoint(codePoint);
       this.covered.set(key, answer);
     }
     return answer;
   };
+
+  /** The font behind a name, opened on first use and made to lay out quickly. */
+  private openFont(name: string): OpenFont {
+    let font = this.open.get(name);
+    if (font === undefined) {
+      this.doc.font(name);
+      // pdfkit's types leave out the open font, which alone knows its glyphs
+      font = (this.doc as unknown as { _font: { font: OpenFont } })._font.font;
+      layOutQuickly(font);
+      this.open.set(name, font);
+    }
+    return font;
+  }
 }
 
 /** What the thin spaces of other hands become, so that one gap stands everywhere. */
 function tidy(text: string): string {
-  const spaced = text.replace(/[\u2009\u202f\u2007\u2008\u200a]/gu, '\u00a0');
-  const edges = /^( ?).*?( ?)$/su.exec(spaced);
-  return `${edges?.[1] ?? ''}${plainName(spaced)}${edges?.[2] ?? ''}`;
+  return printable(text).replace(/[\u2009\u202f\u2007\u2008\u200a]/gu, '\u00a0');
 }
 
 function shaping(text: string, style: Style): { features?: PDFKit.Mixins.OpenTypeFeatures[] } {
@@ -212,17 +222,22 @@ function append(line: Line, more: Line, gap: number): void {
   line.width += gap + more.width;
 }
 
-/** Neighbours of one look and font become one stretch. */
+/** Neighbours of one look and font become one stretch; a gap joins only where the same goes on after it. */
 function merged(segments: readonly Segment[]): Segment[] {
   const out: Segment[] = [];
-  for (const segment of segments) {
+  segments.forEach((segment, at) => {
     const last = out.at(-1);
-    if (last !== undefined && last.font === segment.font && sameStyle(last.style, segment.style)) {
+    const goesOn = segment.text !== ' ' || alike(segment, segments[at + 1]);
+    if (last !== undefined && goesOn && alike(last, segment)) {
       last.text += segment.text;
       last.width += segment.width;
     } else out.push({ ...segment });
-  }
+  });
   return out;
+}
+
+function alike(a: Segment, b: Segment | undefined): boolean {
+  return b !== undefined && a.font === b.font && sameStyle(a.style, b.style);
 }
 
 function sameStyle(a: Style, b: Style): boolean {

@@ -1,6 +1,7 @@
-import { type LoadRecord, createLoadRecord, monthIndex, UTC_TABLE } from '#libs/engine/index.js';
+import { createLoadRecord, type LoadRecord } from '#libs/engine/index.js';
 import type { EntityManager } from 'typeorm';
-import { type PackedColumn, packColumn, unpackColumn } from './packed-column.js';
+import { type MonthColumn, packRecord, type RequiredColumn } from './pack-record.js';
+import { unpackColumn } from './packed-column.js';
 import { RecordColumn } from './record-column.js';
 import { StoredRecord } from './stored-record.js';
 
@@ -9,40 +10,6 @@ export type RecordFacts = Pick<
   StoredRecord,
   'id' | 'siteId' | 'hash' | 'summary' | 'quality' | 'fileName' | 'fileHash' | 'fileBytes' | 'createdAt'
 >;
-
-/** One quantity over one UTC month, ready to be stored. */
-export interface MonthColumn extends PackedColumn {
-  month: string;
-  quantity: string;
-}
-
-const REQUIRED = ['beginS', 'activeKw', 'laggingKvar', 'leadingKvar'] as const;
-const OPTIONAL = ['voltageV', 'connectedKvar'] as const;
-
-/**
- * Packs a record's columns by UTC month; no database is needed, so that another thread can do it.
- * @param record the record
- */
-export function packRecord(record: LoadRecord): MonthColumn[] {
-  const { names, ofInterval } = monthIndex(record.beginS, UTC_TABLE);
-  const columns = Object.entries(columnsOf(record));
-  return names.flatMap((month, index) => {
-    const from = ofInterval.indexOf(index);
-    const to = ofInterval.lastIndexOf(index) + 1;
-    return columns.map(([quantity, values]) => ({ month, quantity, ...packColumn(values.subarray(from, to)) }));
-  });
-}
-
-function columnsOf(record: LoadRecord): Record<string, Float64Array> {
-  const columns: Record<string, Float64Array> = {};
-  for (const name of REQUIRED) columns[name] = record[name];
-  for (const name of OPTIONAL) {
-    const values = record[name];
-    if (values !== null) columns[name] = values;
-  }
-  if (record.standby !== null) columns.standby = Float64Array.from(record.standby);
-  return columns;
-}
 
 /**
  * Stores a record with its columns; call it inside one write.
@@ -85,7 +52,7 @@ export async function readRecord(manager: EntityManager, id: string): Promise<Lo
     const months = rows.filter((row) => row.quantity === quantity);
     columns.set(quantity, joined(months, stored.intervalCount, quantity));
   }
-  const column = (name: (typeof REQUIRED)[number]) => {
+  const column = (name: RequiredColumn) => {
     const values = columns.get(name);
     if (values === undefined) throw new Error(`record ${id} has no column ${name}`);
     return values;

@@ -6,11 +6,9 @@ import { StoredSite } from './stored-site.js';
 
 /** What is shown of the same kvar built the other way. */
 export interface RivalSummary {
+  /** in words: "No reactors" */
+  name: string;
   verdict: Verdict;
-  /** nameplate kvar of each stage, groups expanded [kvar] */
-  ratedKvar: number[];
-  /** largest reactor ratio of its stages [%], 0 = plain */
-  reactorPct: number;
   /** levels above 0 at which a limit is exceeded in some corner */
   levelsOver: number;
   levelsAll: number;
@@ -63,6 +61,10 @@ export class Revision {
   /** the result as JSON, put in words */
   @Column({ type: 'text' })
   result: string;
+
+  /** what is proposed or judged, in one sentence */
+  @Column({ type: 'varchar', length: 400 })
+  proposed: string;
 
   @Col('json', { nullable: true })
   rival: RivalSummary | null;

@@ -78,7 +78,7 @@ static void choose(Bank *b, double wanted) {
 static void connect_one(Bank *b, int c, double begin) {
   int pick = -1;
   for (int s = b->first[c]; s < b->first[c] + b->count[c]; s++) {
-    if (b->on[s] || b->off_since[s] > begin - b->delay) continue;
+    if (b->on[s] || begin < b->off_since[s] + b->delay) continue;
     if (pick < 0 || b->switchings[s] < b->switchings[pick]) pick = s;
   }
   b->on[pick] = 1;
@@ -99,7 +99,7 @@ static double decide(Bank *b, double begin, double wanted) {
   for (int c = 0; c < b->classes; c++) {
     int free = 0;
     for (int s = b->first[c]; s < b->first[c] + b->count[c]; s++) {
-      free += !b->on[s] && b->off_since[s] <= begin - b->delay;
+      free += !b->on[s] && begin >= b->off_since[s] + b->delay;
     }
     b->free[c] = free;
   }

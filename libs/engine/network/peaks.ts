@@ -20,6 +20,9 @@ const REFINED_WIDTH_H = 1e-6;
 const APPROACH = 0.7;
 const APPROACH_FROM = 0.05;
 const APPROACH_POINTS = 30;
+/** Points nearer than this are one: groups of one ratio but other ratings differ in the last digit of their tuned order,
+ * and two samples a rounding apart would make a false valley of the rounding. */
+const ONE_POINT_H = 1e-9;
 
 interface FactorGrid {
   ordersH: Float64Array;
@@ -138,7 +141,8 @@ export function peakGrid(tunedH: readonly number[]): Float64Array {
       points.add(tuned + step);
     }
   }
-  return Float64Array.from(points)
+  const ascending = Float64Array.from(points)
     .filter((h) => h >= 1 && h <= HIGHEST_ORDER_H)
     .sort();
+  return ascending.filter((h, i) => i === 0 || h - ascending[i - 1]! > ONE_POINT_H);
 }

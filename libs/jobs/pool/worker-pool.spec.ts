@@ -19,10 +19,11 @@ export const steps = ({ port }) => { for (let i = 1; i <= 3; i++) port.postMessa
 describe('a pool of worker threads', () => {
   const dir = mkdtempSync(join(tmpdir(), 'varwright-pool-'));
   let pool: WorkerPool;
+  const faults: unknown[] = [];
 
   beforeAll(() => {
     writeFileSync(join(dir, 'worker.mjs'), WORKER);
-    pool = new WorkerPool(pathToFileURL(join(dir, 'worker.mjs')), 2);
+    pool = new WorkerPool(pathToFileURL(join(dir, 'worker.mjs')), (error) => faults.push(error), 2);
   });
 
   afterAll(async () => {
@@ -50,6 +51,13 @@ describe('a pool of worker threads', () => {
     setTimeout(() => stop.abort(), 100);
     await expect(spinning).rejects.toMatchObject({ name: 'AbortError' });
     expect(await pool.run<number>('twice', 1)).toBe(2);
+  });
+
+  it('whose worker file is broken says so and ends no process', async () => {
+    writeFileSync(join(dir, 'broken.mjs'), `import './nowhere.mjs';`);
+    const broken = new WorkerPool(pathToFileURL(join(dir, 'broken.mjs')), (error) => faults.push(error), 1);
+    await expect(broken.run('twice', 1)).rejects.toThrow(/nowhere/);
+    await broken.close();
   });
 
   it('passes progress on', async () => {

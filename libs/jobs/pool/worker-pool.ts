@@ -1,6 +1,6 @@
 import { availableParallelism } from 'node:os';
 import { fileURLToPath } from 'node:url';
-import { MessageChannel } from 'node:worker_threads';
+import { MessageChannel, receiveMessageOnPort } from 'node:worker_threads';
 import { Piscina } from 'piscina';
 import { unpackAnswer, type WorkerAnswer } from './worker-answer.js';
 
@@ -20,9 +20,14 @@ export class WorkerPool {
 
   /**
    * @param workerFile compiled module
+   * @param onFault told when a thread dies while it has no task
    * @param threads most threads at a time; absent, one a core but one, two at least
    */
-  constructor(workerFile: URL, threads: number = Math.max(2, availableParallelism() - 1)) {
+  constructor(
+    workerFile: URL,
+    onFault: (error: unknown) => void,
+    threads: number = Math.max(2, availableParallelism() - 1),
+  ) {
     this.#pool = new Piscina({
       filename: fileURLToPath(workerFile),
       minThreads: 1,
@@ -31,6 +36,8 @@ export class WorkerPool {
       // A worker is compiled code: it must not take over conditions its parent resolves sources with.
       execArgv: [],
     });
+    // Without a listener the event would end the process.
+    this.#pool.on('error', onFault);
   }
 
   /**
@@ -45,7 +52,12 @@ export class WorkerPool {
     port1.on('message', (fraction: number) => report?.(fraction));
     try {
       const options = { name, transferList: [port2], ...(signal === undefined ? {} : { signal }) };
-      return unpackAnswer((await this.#pool.run({ task, port: port2 }, options)) as WorkerAnswer<T>);
+      const answer = (await this.#pool.run({ task, port: port2 }, options)) as WorkerAnswer<T>;
+      // The answer comes by another way and may have overtaken the last reports.
+      for (let late = receiveMessageOnPort(port1); late !== undefined; late = receiveMessageOnPort(port1)) {
+        report?.(late.message as number);
+      }
+      return unpackAnswer(answer);
     } finally {
       port1.close();
     }

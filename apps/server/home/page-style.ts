@@ -1,0 +1,47 @@
+/** The page's style sheet: rules, white and alignment; ink is the site, blue the bank. */
+export const PAGE_STYLE = `
+:root { color-scheme: light dark;
+  --sheet: #fbfcfa; --ink: #14202b; --soft: #505e69; --hair: #c3ccca; --bank: #0b5c99;
+  --watch: #916200; --avoid: #8e0f45; --avoid-fill: #8e0f45; --on-avoid: #fbfcfa; }
+@media (prefers-color-scheme: dark) { :root {
+  --sheet: #10181e; --ink: #e8eef0; --soft: #a3b1b9; --hair: #3b4952; --bank: #74b8f0;
+  --watch: #f2cc55; --avoid: #ff7c98; --avoid-fill: #c9316a; --on-avoid: #ffffff; } }
+* { box-sizing: border-box; }
+body { margin: 0; background: var(--sheet); color: var(--ink);
+  font: 15px/21px "Sofia Sans Semi Condensed", system-ui, sans-serif; }
+header, main, footer { max-width: 1016px; margin: 0 auto; padding: 0 32px; }
+header { padding-top: 16px; }
+header p { margin: 0 0 12px; font-size: 16px; }
+header strong { font-weight: 600; }
+.line { height: 5px; background: var(--ink); }
+h1 { font-size: 25px; line-height: 30px; font-weight: 600; margin: 24px 0 8px; overflow-wrap: anywhere; }
+h2 { font-size: 16px; line-height: 20px; font-weight: 600; margin: 0; padding-top: 12px; }
+section { border-top: 1px solid var(--hair); margin-top: 24px; }
+p, ul { margin: 8px 0; }
+ul { padding-left: 20px; }
+a { color: inherit; text-decoration: underline dotted; text-underline-offset: 4px; display: inline-block; padding: 2px 0; }
+a:focus-visible { outline: 3px solid var(--ink); outline-offset: 3px; }
+.soft { color: var(--soft); }
+.bank { color: var(--bank); }
+.verdict { font-size: 19px; line-height: 24px; font-weight: 600; display: inline-flex; align-items: center; gap: 8px; }
+.verdict svg { width: 16px; height: 16px; flex: none; }
+.watch { color: var(--watch); }
+.avoid { background: var(--avoid-fill); color: var(--on-avoid); padding: 2px 8px; }
+.verdict.avoid { font-size: 17px; }
+dl { display: grid; grid-template-columns: repeat(auto-fill, minmax(150px, 1fr)); gap: 16px 24px; margin: 16px 0; }
+dl div { display: flex; flex-direction: column-reverse; justify-content: flex-end; }
+dt { font-size: 13px; line-height: 18px; color: var(--soft); }
+dd { margin: 0; font-size: 25px; line-height: 29px; font-weight: 600; }
+dd small { font-size: 15px; font-weight: 400; color: var(--soft); }
+table { border-collapse: collapse; width: 100%; max-width: 500px; font-variant-numeric: tabular-nums; }
+caption { text-align: left; color: var(--soft); font-size: 13px; padding: 8px 0; }
+th { text-align: left; font-weight: 400; }
+thead th { color: var(--soft); font-size: 13px; }
+td, thead th + th { text-align: right; }
+th, td { padding: 4px 8px 4px 0; border-bottom: 1px solid var(--hair); }
+.links { list-style: none; padding: 0; display: flex; flex-wrap: wrap; gap: 4px 24px; }
+.links a { padding: 9px 0; }
+footer { padding-bottom: 32px; }
+@media (max-width: 719px) { header, main, footer { padding-left: 14px; padding-right: 14px; } h1 { font-size: 21px; line-height: 26px; } }
+@media print { .links { display: none; } }
+`;

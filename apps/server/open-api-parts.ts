@@ -1,0 +1,170 @@
+/** What the routes' own declarations cannot say, by method and path; merged into the description. */
+type Part = { parameters?: object[]; requestBody?: object; responses?: Record<string, object> };
+
+const text = { type: 'string' };
+const whole = { type: 'integer' };
+const moment = { type: 'string', format: 'date-time' };
+const open = { type: 'object', additionalProperties: true };
+const listOf = (items: object) => ({ type: 'array', items });
+const schemaOf = (name: string) => ({ $ref: `#/components/schemas/${name}` });
+const objectOf = (properties: Record<string, object>) => ({
+  type: 'object',
+  required: Object.keys(properties),
+  properties,
+});
+const nullable = (schema: object) => ({ ...schema, nullable: true });
+const json = (description: string, schema: object) => ({ description, content: { 'application/json': { schema } } });
+const query = (name: string, description: string, schema: object) => ({ in: 'query', name, description, schema });
+const header = (name: string, description: string, required: boolean) => ({
+  in: 'header',
+  name,
+  description,
+  required,
+  schema: text,
+});
+
+const siteHead = {
+  id: text,
+  number: whole,
+  name: text,
+  version: whole,
+  createdAt: moment,
+  updatedAt: moment,
+};
+
+const problem = {
+  type: 'object',
+  required: ['code', 'expected', 'found'],
+  properties: { code: text, path: text, row: whole, column: whole, expected: text, found: text, unit: text },
+};
+
+const revisionHead = {
+  siteId: text,
+  number: text,
+  revision: whole,
+  kind: { type: 'string', enum: ['plan', 'assess'] },
+  verdict: { type: 'string', enum: ['clear', 'watch', 'avoid'] },
+  createdAt: moment,
+  author: nullable(text),
+  reason: nullable(text),
+  proposed: text,
+  recordId: text,
+  recordHash: text,
+  engineVersion: text,
+  contentHash: text,
+  links: open,
+};
+
+/** The shapes of answers. */
+export const ANSWER_SCHEMAS: Record<string, object> = {
+  Problem: {
+    type: 'object',
+    required: ['type', 'title', 'status', 'detail', 'code', 'problems'],
+    properties: {
+      ...{ type: text, title: text, status: whole, detail: text, code: text, path: text, row: whole, column: whole },
+      problems: listOf(problem),
+      questions: listOf(open),
+    },
+  },
+  StoredSite: objectOf({ ...siteHead, site: schemaOf('Site') }),
+  LoadRecord: objectOf({
+    ...{ id: text, siteId: text, hash: text, createdAt: moment, record: open, quality: open },
+    file: objectOf({ name: nullable(text), sha256: text, bytes: whole }),
+  }),
+  Job: objectOf({
+    ...{ id: whole, siteId: text, kind: text, attempt: whole, createdAt: moment, finishedAt: nullable(moment) },
+    state: { type: 'string', enum: ['queued', 'running', 'done', 'failed', 'cancelled'] },
+    progress: { type: 'number', minimum: 0, maximum: 1 },
+    error: { nullable: true, allOf: [schemaOf('Problem')] },
+    revision: nullable(whole),
+    links: open,
+  }),
+  RevisionHead: objectOf(revisionHead),
+  Revision: objectOf({ ...revisionHead, rival: nullable(open), inputs: open, result: open }),
+};
+
+const planning: Part = {
+  parameters: [
+    query('wait', 'seconds to wait for the revision, 0 to 60', { type: 'integer', minimum: 0, maximum: 60 }),
+  ],
+  responses: {
+    200: json('Equal inputs led to this revision before.', schemaOf('Revision')),
+    201: json('The revision, made within the wait.', schemaOf('Revision')),
+    202: json('The job that makes the revision.', schemaOf('Job')),
+  },
+};
+
+const upload: Part = {
+  parameters: [
+    query('format', 'format of the file, where it is not to be recognised', text),
+    query('timeZone', 'zone of stamps that say none: a name or a fixed offset', text),
+    query('map', 'a map as JSON, in answer to a question', text),
+    query('name', 'name of the file', text),
+  ],
+  requestBody: {
+    required: true,
+    content: {
+      'multipart/form-data': {
+        schema: {
+          type: 'object',
+          required: ['file'],
+          properties: { file: { type: 'string', format: 'binary' }, format: text, timeZone: text, map: text },
+        },
+      },
+      'text/csv': { schema: text },
+      'application/octet-stream': { schema: { type: 'string', format: 'binary' } },
+    },
+  },
+  responses: { 201: json('What was read.', schemaOf('LoadRecord')) },
+};
+
+const sites = '/api/sites';
+const site = `${sites}/{siteId}`;
+const record = `${site}/records/{recordId}`;
+const revision = `${site}/revisions/{revision}`;
+const job = '/api/jobs/{jobId}';
+
+export const OPEN_API_PARTS: Record<string, Part> = {
+  [`get ${sites}`]: {
+    responses: {
+      200: json('Every site.', objectOf({ sites: listOf(objectOf({ ...siteHead, latest: nullable(open) })) })),
+    },
+  },
+  [`post ${sites}`]: { responses: { 201: json('The site.', schemaOf('StoredSite')) } },
+  [`get ${site}`]: { responses: { 200: json('The site.', schemaOf('StoredSite')) } },
+  [`put ${site}`]: {
+    parameters: [header('If-Match', 'the ETag the site was read with', true)],
+    responses: { 200: json('The site as it stands now.', schemaOf('StoredSite')) },
+  },
+  [`delete ${site}`]: { parameters: [header('If-Match', 'the ETag the site was read with', false)] },
+  [`get ${site}/records`]: {
+    responses: { 200: json('The records.', objectOf({ records: listOf(schemaOf('LoadRecord')) })) },
+  },
+  [`post ${site}/records`]: upload,
+  [`get ${record}`]: { responses: { 200: json('The record.', schemaOf('LoadRecord')) } },
+  [`get ${record}/columns`]: { responses: { 200: json('One list a column.', open) } },
+  [`post ${site}/plans`]: planning,
+  [`post ${site}/assessments`]: planning,
+  [`get ${site}/revisions`]: {
+    responses: { 200: json('The revisions.', objectOf({ revisions: listOf(schemaOf('RevisionHead')) })) },
+  },
+  [`get ${revision}`]: { responses: { 200: json('The revision.', schemaOf('Revision')) } },
+  [`get ${revision}/proposal.pdf`]: {
+    responses: {
+      200: {
+        description: 'The proposal.',
+        content: { 'application/pdf': { schema: { type: 'string', format: 'binary' } } },
+      },
+    },
+  },
+  [`get ${job}`]: { responses: { 200: json('The job.', schemaOf('Job')) } },
+  [`delete ${job}`]: { responses: { 200: json('The cancelled job.', schemaOf('Job')) } },
+  [`post ${job}/cancel`]: { responses: { 200: json('The cancelled job.', schemaOf('Job')) } },
+  [`get ${job}/events`]: {
+    parameters: [header('Last-Event-ID', 'the last event that was seen', false)],
+    responses: {
+      200: { description: 'Events named by the job’s state.', content: { 'text/event-stream': { schema: text } } },
+      204: { description: 'The job is finished and its end was seen.' },
+    },
+  },
+};

@@ -1,0 +1,55 @@
+import type { INestApplication } from '@nestjs/common';
+import type { OpenAPIObject } from '@nestjs/swagger';
+import { routesOf } from './declared-routes.js';
+import { ANSWER_SCHEMAS, OPEN_API_PARTS } from './open-api-parts.js';
+
+type Operation = { summary?: string; parameters?: object[]; requestBody?: object; responses: Record<string, object> };
+
+/** The description of the API, made from the routes when it is first asked for: its maker takes half a second to load. */
+export class OpenApi {
+  #app: INestApplication | null = null;
+  #document: Promise<OpenAPIObject> | null = null;
+
+  /** @param app the application it describes, before it listens */
+  describe(app: INestApplication): void {
+    this.#app = app;
+  }
+
+  /** The document, OpenAPI 3.0. */
+  document(): Promise<OpenAPIObject> {
+    if (this.#app === null) throw new Error('the API is described before it is made');
+    this.#document ??= describeRoutes(this.#app);
+    return this.#document;
+  }
+}
+
+async function describeRoutes(app: INestApplication): Promise<OpenAPIObject> {
+  const { DocumentBuilder, SwaggerModule } = await import('@nestjs/swagger');
+  const about = new DocumentBuilder()
+    .setTitle('Varwright')
+    .setDescription('Plans capacitor banks for power-factor correction, from the meter’s record to the proposal.')
+    .setVersion('1')
+    .build();
+  const document = SwaggerModule.createDocument(app, about);
+  document.components = { ...document.components, schemas: { ...document.components?.schemas, ...ANSWER_SCHEMAS } };
+  for (const { method, path, declared } of routesOf(app)) {
+    const template = path.replace(/:(\w+)/g, '{$1}');
+    const item = document.paths[template] as Record<string, Operation> | undefined;
+    const operation = item?.[method.toLowerCase()];
+    if (operation === undefined) continue;
+    const { parameters = [], responses, ...part } = OPEN_API_PARTS[`${method.toLowerCase()} ${template}`] ?? {};
+    Object.assign(operation, part, {
+      summary: declared?.does ?? '',
+      parameters: [...(operation.parameters ?? []), ...parameters],
+      responses: { ...(responses ?? operation.responses), default: REFUSED },
+    });
+  }
+  delete document.paths['/api/{path}'];
+  delete document.paths['/api/*'];
+  return document;
+}
+
+const REFUSED = {
+  description: 'An error, naming what is wrong and where.',
+  content: { 'application/problem+json': { schema: { $ref: '#/components/schemas/Problem' } } },
+};

@@ -1,0 +1,13 @@
+import type { Site, ZoneTable } from '#libs/engine/index.js';
+
+/** What a job of planning needs, frozen when it is asked for. */
+export interface FrozenPlan {
+  kind: 'plan' | 'assess';
+  /** as given, validated, `asOf` filled in */
+  site: Site;
+  zone: ZoneTable;
+  recordId: string;
+  recordHash: string;
+  author: string | null;
+  reason: string | null;
+}

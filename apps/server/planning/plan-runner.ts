@@ -1,0 +1,86 @@
+import { createHash, randomUUID } from 'node:crypto';
+import { ENGINE_VERSION, type LoadRecord } from '#libs/engine/index.js';
+import type { Hands, Runner } from '#libs/jobs/in-process-jobs.js';
+import type { WorkerPool } from '#libs/jobs/pool/worker-pool.js';
+import type { Job } from '#libs/store/job.js';
+import { finishJob } from '#libs/store/jobs.js';
+import { readRecord } from '#libs/store/records.js';
+import type { Revision } from '#libs/store/revision.js';
+import { insertRevision } from '#libs/store/revisions.js';
+import { noSite } from '#libs/store/sites.js';
+import type { Store } from '#libs/store/store.js';
+import { StoredSite } from '#libs/store/stored-site.js';
+import type { PlanTask, PlanValue } from './compute-plan.js';
+import { contentOf } from './planning.js';
+import type { FrozenPlan } from './plan-request.js';
+
+/**
+ * Does the jobs of planning: computes in a worker thread, then writes revision, proposal and the job's end at once.
+ * @param store the store
+ * @param pool worker threads started with planning-worker
+ */
+export function planRunner(store: Store, pool: WorkerPool): Runner {
+  return async (job, hands) => {
+    const frozen = job.request as FrozenPlan;
+    const record = await store.read((manager) => readRecord(manager, frozen.recordId));
+    // It can be removed while the job waits; then the job's end is a refusal, not a fault.
+    if (record === null) throw noSite(`record ${frozen.recordId}`);
+    while (!(await attempt({ store, pool, job, frozen, record }, hands))) {
+      // Another revision took the number this proposal was made for: make it again for the next one.
+    }
+  };
+}
+
+interface Work {
+  store: Store;
+  pool: WorkerPool;
+  job: Job;
+  frozen: FrozenPlan;
+  record: LoadRecord;
+}
+
+/** @returns false where the revision's number was taken meanwhile */
+async function attempt({ store, pool, job, frozen, record }: Work, hands: Hands): Promise<boolean> {
+  const site = await store.read((manager) => manager.findOneBy(StoredSite, { id: job.siteId }));
+  if (site === null) throw noSite(job.siteId);
+  const content = contentOf(frozen);
+  const revision = numberedRevision(site, frozen, content);
+  const task: PlanTask = { ...frozen, record, frame: frameOf(revision) };
+  const { result, proposal, ...rest } = await pool.run<PlanValue>('computePlan', task, hands);
+  const sha256 = createHash('sha256').update(proposal).digest('hex');
+  const complete = { ...revision, ...rest, result: JSON.stringify(result), verdict: result.verdict };
+  return store.write(async (manager) => {
+    const standing = await insertRevision(manager, {
+      revision: complete,
+      proposal: { bytes: Buffer.from(proposal), sha256 },
+    });
+    if (standing === null) return false;
+    const end = { state: 'done', error: null, revision: standing.revision, finishedAt: new Date() } as const;
+    if (!(await finishJob(manager, job, end))) throw new Error('the job was taken from this worker');
+    return true;
+  });
+}
+
+type Numbered = Omit<Revision, 'result' | 'proposed' | 'rival' | 'verdict'>;
+
+function numberedRevision(site: StoredSite, frozen: FrozenPlan, content: { text: string; hash: string }): Numbered {
+  return {
+    id: randomUUID(),
+    siteId: site.id,
+    number: `P-${String(site.number).padStart(4, '0')}`,
+    revision: site.lastRevision + 1,
+    kind: frozen.kind,
+    recordId: frozen.recordId,
+    recordHash: frozen.recordHash,
+    inputs: content.text,
+    engineVersion: ENGINE_VERSION,
+    contentHash: content.hash,
+    createdAt: new Date(),
+    author: frozen.author,
+    reason: frozen.reason,
+  };
+}
+
+function frameOf({ number, revision, author, contentHash, engineVersion }: Numbered): PlanTask['frame'] {
+  return { number, revision, state: 'draft, not reviewed', preparedBy: author, contentHash, engineVersion };
+}

@@ -1,0 +1,118 @@
+import { Body, Controller, Get, Inject, Param, Post, Query, Res } from '@nestjs/common';
+import type { FastifyReply } from 'fastify';
+import type { ProblemJson } from '#libs/contract/error-body.js';
+import { type PlanRequest, planRequestSchema } from '#libs/contract/plan-request-schema.js';
+import { InputProblem } from '#libs/engine/index.js';
+import type { Jobs } from '#libs/jobs/jobs.js';
+import type { Job } from '#libs/store/job.js';
+import { ProposalFile } from '#libs/store/proposal-file.js';
+import { Revision } from '#libs/store/revision.js';
+import { Store } from '#libs/store/store.js';
+import { ContractPipe } from '../contract-pipe.js';
+import { showJob } from '../jobs/show-job.js';
+import { pathNumber } from '../path-number.js';
+import { StoredProblem } from '../problem-filter.js';
+import { Public } from '../public.js';
+import { findSite } from '../sites/find-site.js';
+import { JOBS } from '../tokens.js';
+import type { FrozenPlan } from './plan-request.js';
+import { Planning } from './planning.js';
+import { revisionHead, revisionJson } from './show-revision.js';
+import { waitS } from './wait-time.js';
+
+/** Plans and assessments of a site: asked for as jobs, kept as numbered revisions. */
+@Controller('api/sites/:siteId')
+export class PlanningController {
+  constructor(
+    private readonly store: Store,
+    private readonly planning: Planning,
+    @Inject(JOBS) private readonly jobs: Jobs,
+  ) {}
+
+  @Post('plans')
+  @Public('Designs a bank for the site as it stands: 202 with the job, or 201 with the revision within ?wait=seconds.')
+  async plan(
+    @Param('siteId') siteId: string,
+    @Query() query: Record<string, unknown>,
+    @Body({ schema: planRequestSchema, pipes: [new ContractPipe()] }) body: PlanRequest,
+    @Res() reply: FastifyReply,
+  ) {
+    return this.#ask('plan', siteId, { body, waitS: waitS(query) }, reply);
+  }
+
+  @Post('assessments')
+  @Public('Judges the site’s own bank: 202 with the job, or 201 with the revision within ?wait=seconds.')
+  async assess(
+    @Param('siteId') siteId: string,
+    @Query() query: Record<string, unknown>,
+    @Body({ schema: planRequestSchema, pipes: [new ContractPipe()] }) body: PlanRequest,
+    @Res() reply: FastifyReply,
+  ) {
+    return this.#ask('assess', siteId, { body, waitS: waitS(query) }, reply);
+  }
+
+  @Get('revisions')
+  @Public('Lists the revisions of a site, the latest first.')
+  async list(@Param('siteId') siteId: string) {
+    const { id } = await findSite(this.store, siteId);
+    const revisions = await this.store.read((manager) =>
+      manager.find(Revision, { where: { siteId: id }, order: { revision: 'DESC' } }),
+    );
+    return { revisions: revisions.map(revisionHead) };
+  }
+
+  @Get('revisions/:revision')
+  @Public('Gives a revision: frozen inputs, hashes, engine version and the result.')
+  async get(@Param('siteId') siteId: string, @Param('revision') revision: string, @Res() reply: FastifyReply) {
+    return this.#send(await this.#find(siteId, revision), reply);
+  }
+
+  @Get('revisions/:revision/proposal.pdf')
+  @Public('Gives the proposal of a revision, the same bytes at every download.')
+  async proposal(@Param('siteId') siteId: string, @Param('revision') revision: string, @Res() reply: FastifyReply) {
+    const { id, number, revision: count } = await this.#find(siteId, revision);
+    const file = await this.store.read((manager) => manager.findOneByOrFail(ProposalFile, { revisionId: id }));
+    return reply
+      .type('application/pdf')
+      .header('etag', `"${file.sha256}"`)
+      .header('content-disposition', `inline; filename="${number}-revision-${count}.pdf"`)
+      .send(file.bytes);
+  }
+
+  async #ask(
+    kind: FrozenPlan['kind'],
+    siteId: string,
+    { body, waitS }: { body: PlanRequest; waitS: number },
+    reply: FastifyReply,
+  ) {
+    const site = await findSite(this.store, siteId);
+    const asked = await this.planning.ask(kind, site, body);
+    if ('contentHash' in asked) return this.#send(asked, reply);
+    const job = waitS === 0 ? asked : await this.jobs.result(asked.id, waitS);
+    if (job.state === 'done') {
+      reply.status(201).header('location', showJob(job).links.revision ?? '');
+      return this.#send(await this.#find(siteId, `${job.revision}`), reply);
+    }
+    refuseEnded(job);
+    return reply.status(202).header('location', showJob(job).links.self).send(showJob(job));
+  }
+
+  async #find(siteId: string, revision: string): Promise<Revision> {
+    const { id } = await findSite(this.store, siteId);
+    const number = pathNumber(revision, 'revision');
+    const found = await this.store.read((manager) => manager.findOneBy(Revision, { siteId: id, revision: number }));
+    if (found !== null) return found;
+    throw new InputProblem([{ code: 'not-found', expected: 'a revision of this site', found: `${number}` }]);
+  }
+
+  #send(revision: Revision, reply: FastifyReply) {
+    return reply.type('application/json').header('etag', `"${revision.contentHash}"`).send(revisionJson(revision));
+  }
+}
+
+/** A job that ended without a revision is the requester's answer. */
+function refuseEnded(job: Job): void {
+  if (job.state === 'failed') throw new StoredProblem(job.error as ProblemJson);
+  if (job.state !== 'cancelled') return;
+  throw new InputProblem([{ code: 'conflict', expected: 'a job that is done', found: 'cancelled' }]);
+}

@@ -1,0 +1,3 @@
+// The file worker threads are started with: what it exports they can run.
+export { computePlan } from './compute-plan.js';
+export { readFile } from './read-file.js';

@@ -1,0 +1,77 @@
+import { Inject, Injectable } from '@nestjs/common';
+import { createHash } from 'node:crypto';
+import { frozenSite } from '#libs/contract/frozen-site.js';
+import { planContent } from '#libs/contract/plan-content.js';
+import type { PlanRequest } from '#libs/contract/plan-request-schema.js';
+import { readSiteWithMathjs } from '#libs/contract/read-site-with-mathjs.js';
+import { zoneTableOf } from '#libs/contract/time-zone.js';
+import { ENGINE_VERSION, InputProblem } from '#libs/engine/index.js';
+import type { Jobs } from '#libs/jobs/jobs.js';
+import type { Job } from '#libs/store/job.js';
+import { Revision } from '#libs/store/revision.js';
+import { Store } from '#libs/store/store.js';
+import { StoredRecord } from '#libs/store/stored-record.js';
+import type { StoredSite } from '#libs/store/stored-site.js';
+import { findRecord } from '../records/find-record.js';
+import { JOBS } from '../tokens.js';
+import type { FrozenPlan } from './plan-request.js';
+
+/** Freezes what a plan is made from and hands it to the jobs. */
+@Injectable()
+export class Planning {
+  constructor(
+    private readonly store: Store,
+    @Inject(JOBS) private readonly jobs: Jobs,
+  ) {}
+
+  /**
+   * Asks for a plan or an assessment of the site as it stands now.
+   * @returns the revision where equal inputs have led to one already, else the job that will make it
+   * @throws InputProblem where the site, the record or the bank to judge is missing
+   */
+  async ask(kind: FrozenPlan['kind'], stored: StoredSite, request: PlanRequest): Promise<Revision | Job> {
+    const site = frozenSite(await readSiteWithMathjs(stored.document), Date.now() / 1000);
+    if (kind === 'assess' && site.bank === undefined) {
+      throw new InputProblem([{ code: 'missing', path: 'bank', expected: 'the bank to judge', found: 'nothing' }]);
+    }
+    const record = await this.#recordOf(stored.id, request.recordId);
+    const zone = zoneTableOf(site.timeZone, record);
+    const frozen: FrozenPlan = {
+      kind,
+      site,
+      zone,
+      recordId: record.id,
+      recordHash: record.hash,
+      author: request.author ?? null,
+      reason: request.reason ?? null,
+    };
+    const { hash } = contentOf(frozen);
+    const standing = await this.store.read((manager) =>
+      manager.findOneBy(Revision, { siteId: stored.id, contentHash: hash }),
+    );
+    if (standing !== null) return standing;
+    return this.jobs.submit({
+      siteId: stored.id,
+      kind,
+      inputHash: hash,
+      engineVersion: ENGINE_VERSION,
+      request: frozen,
+    });
+  }
+
+  async #recordOf(siteId: string, recordId: string | undefined): Promise<StoredRecord> {
+    if (recordId !== undefined) return findRecord(this.store, siteId, recordId);
+    const [latest] = await this.store.read((manager) =>
+      manager.find(StoredRecord, { where: { siteId }, order: { createdAt: 'DESC', id: 'ASC' }, take: 1 }),
+    );
+    if (latest !== undefined) return latest;
+    const expected = 'a load record of this site: upload a meter file first';
+    throw new InputProblem([{ code: 'missing', path: 'recordId', expected, found: 'none' }]);
+  }
+}
+
+/** The text a plan is known by, and its SHA-256. */
+export function contentOf({ kind, site, recordHash, zone }: FrozenPlan): { text: string; hash: string } {
+  const text = planContent({ kind, site, recordHash, zone, engineVersion: ENGINE_VERSION });
+  return { text, hash: createHash('sha256').update(text).digest('hex') };
+}

@@ -1,0 +1,161 @@
+import helmet from '@fastify/helmet';
+import multipart from '@fastify/multipart';
+import { type DynamicModule, Module } from '@nestjs/common';
+import { NestFactory } from '@nestjs/core';
+import { FastifyAdapter, type NestFastifyApplication } from '@nestjs/platform-fastify';
+import type { FastifyInstance } from 'fastify';
+import { InProcessJobs } from '#libs/jobs/in-process-jobs.js';
+import { WorkerPool } from '#libs/jobs/pool/worker-pool.js';
+import { openStore } from '#libs/store/open-store.js';
+import { Store } from '#libs/store/store.js';
+import { type Registered, refuseUndeclared, routesOf } from './declared-routes.js';
+import { DemoController } from './demo/demo-controller.js';
+import { loadDemo } from './demo/load-demo.js';
+import { HealthController } from './health/health-controller.js';
+import { HomeController } from './home/home-controller.js';
+import { JobsController } from './jobs/jobs-controller.js';
+import { refuseForeign } from './local-requests.js';
+import { OpenApi } from './open-api.js';
+import { OpenApiController } from './open-api-controller.js';
+import { Planning } from './planning/planning.js';
+import { PlanningController } from './planning/planning-controller.js';
+import { planRunner } from './planning/plan-runner.js';
+import { describeError, ProblemFilter } from './problem-filter.js';
+import { RecordImport } from './records/record-import.js';
+import { RecordsController } from './records/records-controller.js';
+import { Spool } from './records/spool.js';
+import { refuseOtherBodies } from './request-bodies.js';
+import { ServerLog } from './server-log.js';
+import type { Settings } from './settings.js';
+import { SitesController } from './sites/sites-controller.js';
+import { JOBS } from './tokens.js';
+import { UnknownController } from './unknown-controller.js';
+
+/** What may stand in for the program's own, in tests. */
+export interface ServerParts {
+  /** compiled file of the worker threads */
+  workerFile: URL;
+  controllers: NonNullable<DynamicModule['controllers']>;
+}
+
+const CONTROLLERS: ServerParts['controllers'] = [
+  HomeController,
+  HealthController,
+  SitesController,
+  RecordsController,
+  PlanningController,
+  JobsController,
+  DemoController,
+  OpenApiController,
+  UnknownController,
+];
+
+@Module({})
+class ServerModule {}
+
+/**
+ * Opens the store, wires the server and checks that every route says who may use it; it does not listen yet.
+ * @param settings from `readSettings`
+ * @param parts what stands in for the program's own
+ * @returns the application; closing it ends the jobs, the threads and the store
+ */
+export async function createServer(
+  settings: Settings,
+  {
+    workerFile = new URL('./planning/planning-worker.js', import.meta.url),
+    controllers = CONTROLLERS,
+  }: Partial<ServerParts> = {},
+): Promise<NestFastifyApplication> {
+  const log = new ServerLog(settings.logLevel);
+  const store = await openStore(settings.dbUrl);
+  const spool = new Spool(settings.spoolDir, settings.uploadBytes);
+  await spool.prepare();
+  const pool = new WorkerPool(workerFile, (error) => log.fault(error));
+  const runner = planRunner(store, pool);
+  const jobs = new InProcessJobs({
+    store,
+    runners: { plan: runner, assess: runner },
+    describe: describeError,
+    onFault: (error) => log.fault(error),
+  });
+  let demo: Promise<void> = Promise.resolve();
+  const module: DynamicModule = {
+    module: ServerModule,
+    controllers,
+    providers: [
+      { provide: Store, useValue: store },
+      { provide: Spool, useValue: spool },
+      { provide: WorkerPool, useValue: pool },
+      { provide: JOBS, useValue: jobs },
+      { provide: OpenApi, useValue: new OpenApi() },
+      RecordImport,
+      Planning,
+      {
+        provide: 'closing',
+        useValue: {
+          onApplicationShutdown: async () => {
+            await jobs.close();
+            await pool.close();
+            await demo;
+            await store.close();
+          },
+        },
+      },
+    ],
+  };
+  const app = await serve(module, { settings, log });
+  if (settings.demo) {
+    demo = loadDemo({ store, spool, importer: app.get(RecordImport), planning: app.get(Planning) }).catch((error) =>
+      log.fault(error),
+    );
+  }
+  return app;
+}
+
+async function serve(
+  module: DynamicModule,
+  { settings, log }: { settings: Settings; log: ServerLog },
+): Promise<NestFastifyApplication> {
+  const adapter = new FastifyAdapter({
+    bodyLimit: 1_000_000,
+    forceCloseConnections: 'idle',
+    // An address that cannot be decoded never reaches a route, nor the filter.
+    frameworkErrors: (error, _request, reply) => {
+      const problem = describeError(error);
+      reply.status(problem.status).type('application/problem+json').send(JSON.stringify(problem));
+    },
+  });
+  const registered: Registered[] = [];
+  const fastify = adapter.getInstance() as unknown as FastifyInstance;
+  fastify.addHook('onRoute', ({ method, url }) => {
+    for (const one of [method].flat()) registered.push({ method: one, path: url });
+  });
+  const app = await NestFactory.create<NestFastifyApplication>(module, adapter, { logger: log, bodyParser: false });
+  app.useGlobalFilters(new ProblemFilter(log));
+  app.enableShutdownHooks();
+  await harden(fastify, { settings, log });
+  await app.init();
+  refuseUndeclared(routesOf(app), registered);
+  app.get(OpenApi).describe(app);
+  return app;
+}
+
+async function harden(
+  fastify: FastifyInstance,
+  { settings, log }: { settings: Settings; log: ServerLog },
+): Promise<void> {
+  // Served by plain http on this machine: asking a browser for https would leave the page blank.
+  await fastify.register(helmet, {
+    hsts: false,
+    contentSecurityPolicy: { directives: { 'upgrade-insecure-requests': null } },
+  });
+  await fastify.register(multipart, {
+    limits: { fileSize: settings.uploadBytes, files: 1, fields: 10, fieldSize: 100_000, parts: 11 },
+  });
+  refuseOtherBodies(fastify);
+  fastify.addHook('onRequest', async (request) => refuseForeign(request));
+  fastify.addHook('onResponse', async (request, reply) => {
+    const route = request.routeOptions.url ?? 'none';
+    log.answered({ method: request.method, route, status: reply.statusCode, ms: Math.round(reply.elapsedTime) });
+  });
+}

@@ -1,0 +1,18 @@
+import { noSite } from '#libs/store/sites.js';
+import type { Store } from '#libs/store/store.js';
+import { StoredSite } from '#libs/store/stored-site.js';
+
+const ID = /^[0-9a-f]{8}(-[0-9a-f]{4}){3}-[0-9a-f]{12}$/;
+
+/** Whether a text can be an id of ours; the database is asked for nothing else. */
+export const isId = (text: string) => ID.test(text);
+
+/**
+ * A site by its id.
+ * @throws InputProblem `not-found`
+ */
+export async function findSite(store: Store, id: string): Promise<StoredSite> {
+  const site = isId(id) ? await store.read((manager) => manager.findOneBy(StoredSite, { id })) : null;
+  if (site === null) throw noSite(JSON.stringify(id.slice(0, 60)));
+  return site;
+}

@@ -1,0 +1,86 @@
+import { Body, Controller, Delete, Get, Headers, HttpCode, Param, Post, Put, Res } from '@nestjs/common';
+import type { FastifyReply } from 'fastify';
+import { randomUUID } from 'node:crypto';
+import { readSiteWithMathjs } from '#libs/contract/read-site-with-mathjs.js';
+import { siteSchema } from '#libs/contract/site-schema.js';
+import { Revision } from '#libs/store/revision.js';
+import { deleteSite, insertSite, replaceSite } from '#libs/store/sites.js';
+import { Store } from '#libs/store/store.js';
+import { StoredSite } from '#libs/store/stored-site.js';
+import { Public } from '../public.js';
+import { findSite } from './find-site.js';
+import { tagOf, versionSeen } from './version-tag.js';
+
+/** Sites: the body is the site file, and what is kept is the file as it was given. */
+@Controller('api/sites')
+export class SitesController {
+  constructor(private readonly store: Store) {}
+
+  @Get()
+  @Public('Lists the sites, each with its latest revision.')
+  async list() {
+    const sites = await this.store.read((manager) => manager.find(StoredSite, { order: { number: 'ASC' } }));
+    const latest = await this.store.read((manager) =>
+      manager.find(Revision, {
+        where: sites.map(({ id, lastRevision }) => ({ siteId: id, revision: lastRevision })),
+        select: { siteId: true, revision: true, kind: true, verdict: true, createdAt: true },
+      }),
+    );
+    return {
+      sites: sites.map((site) => {
+        const { siteId: _, ...revision } = latest.find(({ siteId }) => siteId === site.id) ?? { siteId: null };
+        return { ...headOf(site), latest: 'revision' in revision ? revision : null };
+      }),
+    };
+  }
+
+  @Post()
+  @Public('Adds a site. The body is the site file.')
+  async create(@Body({ schema: siteSchema }) document: object, @Res({ passthrough: true }) reply: FastifyReply) {
+    const { name } = await readSiteWithMathjs(document);
+    const site = await this.store.write((manager) =>
+      insertSite(manager, { id: randomUUID(), name, document }, new Date()),
+    );
+    reply.header('location', `/api/sites/${site.id}`);
+    return answerWith(site, reply);
+  }
+
+  @Get(':siteId')
+  @Public('Gives a site with its file; the ETag is its version.')
+  async get(@Param('siteId') siteId: string, @Res({ passthrough: true }) reply: FastifyReply) {
+    return answerWith(await findSite(this.store, siteId), reply);
+  }
+
+  @Put(':siteId')
+  @Public('Replaces a site’s file, if it still has the version named in If-Match.')
+  async replace(
+    @Param('siteId') siteId: string,
+    @Headers('if-match') seen: string | undefined,
+    @Body({ schema: siteSchema }) document: object,
+    @Res({ passthrough: true }) reply: FastifyReply,
+  ) {
+    const version = versionSeen(seen, true) ?? 0;
+    const { id } = await findSite(this.store, siteId);
+    const { name } = await readSiteWithMathjs(document);
+    await this.store.write((manager) => replaceSite(manager, { id, name, document }, version, new Date()));
+    return answerWith(await findSite(this.store, id), reply);
+  }
+
+  @Delete(':siteId')
+  @HttpCode(204)
+  @Public('Removes a site with its records, revisions and proposals; If-Match is heeded where given.')
+  async remove(@Param('siteId') siteId: string, @Headers('if-match') seen: string | undefined) {
+    const version = versionSeen(seen, false);
+    const { id } = await findSite(this.store, siteId);
+    await this.store.write((manager) => deleteSite(manager, id, version));
+  }
+}
+
+function headOf({ document: _, lastRevision: __, ...head }: StoredSite) {
+  return head;
+}
+
+function answerWith(site: StoredSite, reply: FastifyReply) {
+  reply.header('etag', tagOf(site.version));
+  return { ...headOf(site), site: site.document };
+}

@@ -1,0 +1,201 @@
+import type { MeterMap } from '#libs/contract/meter-map.js';
+import { InputProblem } from '#libs/engine/index.js';
+import { type ColumnChoice, columnChoices, columnNamed } from './column-choice.js';
+import { type HeaderColumn, readHeaderColumn } from './header-column.js';
+import { readNumberText } from './number-cell.js';
+import { RowCells } from './row-cells.js';
+import { chooseTimeColumns, isDated, type TimeColumns, timeContent } from './time-columns.js';
+import { readUnit } from './unit-text.js';
+
+/** How the rows of a delimited file are to be read. */
+export interface CsvLayout {
+  /** byte between cells */
+  delimiter: number;
+  /** names of the columns, units of a second header row put behind them; empty texts where the file has no header */
+  names: string[];
+  /** row of the names, counted from 1; 0 where there is none */
+  headerRow: number;
+  /** rows of data begin behind this one */
+  lastHeaderRow: number;
+  time: TimeColumns;
+  choices: ColumnChoice[];
+  header: readonly HeaderColumn[];
+}
+
+interface Row {
+  cells: string[];
+  /** counted from 1 */
+  number: number;
+}
+
+interface Candidate {
+  delimiter: number;
+  row: Row;
+  lastHeaderRow: number;
+  header: HeaderColumn[];
+  data: Row[];
+  score: number;
+}
+
+const DELIMITERS = [';', '\t', '|', ','] as const;
+/** Rows of the buffer that are looked at for a header. */
+const LOOK_ROWS = 400;
+const SAMPLE_ROWS = 24;
+
+/**
+ * Finds the header row and what its columns mean.
+ * @param view the bytes read so far, and the row of the file they begin with
+ * @param map what a person says
+ * @returns the layout, or null where there is no header among these rows
+ * @throws InputProblem where a column that is needed is missing
+ */
+export function findLayout(
+  view: { bytes: Uint8Array; start: number; end: number; rowEnd: number; rowsBefore: number },
+  map: MeterMap,
+): CsvLayout | null {
+  const separators = map.separator === undefined ? DELIMITERS : [map.separator];
+  const candidates = separators.flatMap((separator) => candidatesAt(rowsOf(view, separator), separator, map));
+  const best = candidates.reduce<Candidate | null>((a, b) => (a === null || b.score > a.score ? b : a), null);
+  return best === null ? null : layoutOf(best, map);
+}
+
+/**
+ * Whether the rows look like data without names.
+ * @param view the bytes read so far
+ */
+export function looksTabular(view: {
+  bytes: Uint8Array;
+  start: number;
+  end: number;
+  rowEnd: number;
+  rowsBefore: number;
+}) {
+  return DELIMITERS.some((separator) =>
+    rowsOf(view, separator)
+      .slice(0, SAMPLE_ROWS)
+      .some(({ cells }) => cells.length > 1 && cells.some((cell) => isDated(cell) !== null) && cells.some(isNumber)),
+  );
+}
+
+function rowsOf(
+  view: { bytes: Uint8Array; start: number; end: number; rowEnd: number; rowsBefore: number },
+  separator: string,
+): Row[] {
+  const cells = new RowCells();
+  const marks = { delimiter: separator.charCodeAt(0), rowEnd: view.rowEnd };
+  const rows: Row[] = [];
+  let at = view.start;
+  while (rows.length < LOOK_ROWS && at < view.end) {
+    at = cells.split(view.bytes, at, view.end, marks);
+    if (at < 0) break;
+    rows.push({ cells: cells.texts(), number: view.rowsBefore + rows.length + 1 });
+  }
+  return rows;
+}
+
+function candidatesAt(rows: Row[], separator: string, map: MeterMap): Candidate[] {
+  const delimiter = separator.charCodeAt(0);
+  if (map.headerRow === 0) return headless(rows, delimiter);
+  return rows.flatMap((row, index) => {
+    if (map.headerRow !== undefined ? row.number !== map.headerRow : !mayName(row)) return [];
+    return candidateAt(rows, index, delimiter, map);
+  });
+}
+
+function headless(rows: Row[], delimiter: number): Candidate[] {
+  const row = rows.find(({ cells }) => cells.some((cell) => isDated(cell) !== null));
+  if (row === undefined) return [];
+  const header = row.cells.map((_, index) => readHeaderColumn('', index));
+  const number = row.number - 1;
+  const data = rows.filter((other) => other.number > number);
+  return [
+    {
+      delimiter,
+      row: { cells: header.map(() => ''), number: 0 },
+      lastHeaderRow: number,
+      header,
+      data,
+      score: row.cells.length,
+    },
+  ];
+}
+
+/** A row that holds a date or a number names no columns. */
+function mayName({ cells }: Row): boolean {
+  return (
+    cells.length > 1 && cells.some((cell) => cell !== '') && !cells.some((cell) => isNumber(cell) || isDated(cell))
+  );
+}
+
+function candidateAt(rows: Row[], index: number, delimiter: number, map: MeterMap): Candidate[] {
+  const row = rows[index]!;
+  const under = rows[index + 1];
+  const hasUnits = under !== undefined && isUnitRow(under, row);
+  const names = hasUnits ? row.cells.map((name, column) => withUnit(name, under.cells[column])) : row.cells;
+  const header = names.map(readHeaderColumn);
+  const lastHeaderRow = row.number + (hasUnits ? 1 : 0);
+  const data = rows.slice(index + 1 + (hasUnits ? 1 : 0)).filter(({ cells }) => cells.some((cell) => cell !== ''));
+  const roles = header.filter(({ role }) => role !== null);
+  const said = map.headerRow !== undefined || map.columns !== undefined;
+  if (!said && (roles.length < 2 || roles.every(({ role }) => role === 'time'))) return [];
+  const followed = data[0]?.cells.some((cell) => timeContent([cell]) !== null && isDated(cell) !== null) === true;
+  const score = roles.length + (followed && data[0]!.cells.length === header.length ? 1000 : followed ? 500 : 0);
+  return [{ delimiter, row, lastHeaderRow, header, data: data.slice(0, SAMPLE_ROWS), score }];
+}
+
+/** A row of units under the names: nothing else in it but words without a number. */
+function isUnitRow(under: Row, names: Row): boolean {
+  if (under.cells.length > names.cells.length + 1) return false;
+  const units = under.cells.filter((cell) => readUnit(bare(cell)) !== null);
+  return units.length > 0 && mayName(under);
+}
+
+function withUnit(name: string, unit: string | undefined): string {
+  return unit === undefined || readUnit(bare(unit)) === null ? name : `${name} [${bare(unit)}]`;
+}
+
+function bare(unit: string): string {
+  return unit.replace(/^[([{<]|[)\]}>]$/g, '').trim();
+}
+
+function layoutOf(found: Candidate, map: MeterMap): CsvLayout {
+  const { delimiter, row, lastHeaderRow, header } = found;
+  const names = header.map(({ name }) => name);
+  const sample = found.data.map(({ cells }) => cells);
+  const time = mappedTime(header, map) ?? chooseTimeColumns(header, sample);
+  if (time === null && sample.length === 0) {
+    throw new InputProblem([{ code: 'empty-file', expected: 'rows of data under the header', found: 'none' }]);
+  }
+  if (time === null) {
+    const expected = 'a column of dates and times';
+    const listed = names.join(', ').slice(0, 300);
+    throw new InputProblem([
+      { code: 'no-time-column', row: row.number || 1, expected, found: listed === '' ? 'none' : listed },
+    ]);
+  }
+  const choices = columnChoices(header, map, row.number);
+  const mark = map.stamp ?? time.mark;
+  return { delimiter, names, headerRow: row.number, lastHeaderRow, time: { ...time, mark }, choices, header };
+}
+
+function mappedTime(header: readonly HeaderColumn[], map: MeterMap): TimeColumns | null {
+  const { time, date, clock } = map.columns ?? {};
+  const stamp = time ?? date;
+  if (stamp === undefined) return null;
+  const at = columnNamed(header, stamp, time === undefined ? 'columns.date' : 'columns.time');
+  const beside = clock === undefined ? null : columnNamed(header, clock, 'columns.clock');
+  return {
+    stamp: at.index,
+    clock: beside?.index ?? -1,
+    end: -1,
+    mark: beside?.mark ?? at.mark,
+    zone: beside?.zone ?? at.zone,
+  };
+}
+
+function isNumber(text: string): boolean {
+  if (text === '') return false;
+  const cell = { form: 'wrong' as const, value: 0 } as { form: import('./number-cell.js').NumberForm; value: number };
+  readNumberText(text, cell);
+  return cell.form !== 'wrong' && cell.form !== 'missing';
+}

@@ -1,0 +1,73 @@
+// The trade's words in column names, in English, German, French and Spanish, without accents and in small letters.
+// A word ending in * stands for every word that begins with it.
+
+export const WORDS = {
+  reactive: 'reactive reactives reactiva reactivo reactif reactifs blind* var q',
+  active:
+    'active activa activo actif actifs real wirk* p energy power energia energie puissance potencia leistung arbeit ' +
+    'usage consumption consumo consommation verbrauch* load last demand bezug* electricity stromverbrauch',
+  lagging: 'lag lagging inductive inductiva inductivo inductif induktiv* ind',
+  leading: 'lead leading capacitive capacitiva capacitivo capacitif kapazitiv* cap',
+  imported: 'import imported delivered bezug* soutirage soutiree consumida positive positiv positiva',
+  exported:
+    'export exported received einspeis* ruckspeis* lieferung abgabe generation generated injection injectee ' +
+    'inyeccion inyectada vertida excedente feed exportada negative negativ negativa',
+  bank: 'bank capacitor capacitors kondensator* kompensation* compensation pfc condensateur* condensador* bateria',
+  connected: 'connected zugeschaltet* conectada connectee',
+  beside: 'after before without with nach vor ohne mit apres avant sans avec antes despues sin con',
+  standby: 'standby generator* genset notstrom* emergency secours emergencia aggregat* ersatzstrom*',
+  voltage: 'voltage voltages volt volts spannung* tension tensione',
+  distortion: 'thd thdu thdi harmonic harmonics oberschwingung* unbalance frequency frequenz',
+  ratio: 'factor faktor leistungsfaktor facteur cos cosphi phi pf cosfi',
+  apparent: 'apparent schein* aparente apparente s',
+  cumulative: 'cumulative cumulated cumul* kumul* zahlerstand stand register index acumulada acumulado',
+  other:
+    'price cost tariff limit target contract contracted price* co2 temperature status quality flag type count id ' +
+    'budget forecast prognose prevision',
+  extreme: 'max maximum min minimum peak spitze hochst* maxi* mini* maxima minima pointe',
+  phase: 'l1 l2 l3 phase1 phase2 phase3',
+  time:
+    'date datum fecha time zeit* uhrzeit heure hora clock timestamp timestamps datetime stamp horodat* interval ' +
+    'period periode periodo begin beginning start end ending from to von bis ab beginn ende debut fin inicio desde hasta',
+  begin: 'begin begins beginning start starts starting from von ab beginn anfang debut desde inicio',
+  end: 'end ends ending ende to until till bis fin jusqu* hasta',
+} as const;
+
+export type WordGroup = keyof typeof WORDS;
+
+const EXACT = new Map<WordGroup, Set<string>>();
+const STARTS = new Map<WordGroup, string[]>();
+for (const [group, list] of Object.entries(WORDS) as [WordGroup, string][]) {
+  const all = list.split(' ');
+  EXACT.set(group, new Set(all.filter((word) => !word.endsWith('*'))));
+  STARTS.set(
+    group,
+    all.filter((word) => word.endsWith('*')).map((word) => word.slice(0, -1)),
+  );
+}
+
+/**
+ * The words of a column name: small letters, no accents, parts of camelCase apart.
+ * @param name the name, its unit taken out
+ */
+export function wordsOf(name: string): string[] {
+  const plain = name
+    .replace(/([a-z])([A-Z])/g, '$1 $2')
+    .replace(/stand[- ]by/gi, 'standby')
+    .normalize('NFD')
+    .replace(/\p{M}/gu, '')
+    .replaceAll('ß', 'ss')
+    .toLowerCase();
+  return plain.split(/[^a-z0-9]+/).filter((word) => word !== '');
+}
+
+/**
+ * Whether one of the words belongs to a group.
+ * @param words of a column name
+ * @param group of the vocabulary
+ */
+export function says(words: readonly string[], group: WordGroup): boolean {
+  const exact = EXACT.get(group)!;
+  const starts = STARTS.get(group)!;
+  return words.some((word) => exact.has(word) || starts.some((start) => word.startsWith(start)));
+}

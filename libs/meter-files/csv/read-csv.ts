@@ -1,0 +1,116 @@
+import { InputProblem, type Remark } from '#libs/engine/index.js';
+import type { MeterBytes } from '../meter-bytes.js';
+import type { MeterReading, ReadOptions } from '../meter-format.js';
+import { note } from '../note.js';
+import { closeReading } from '../record/close-reading.js';
+import { type CsvLayout, findLayout, looksTabular } from './csv-layout.js';
+import { QuickRows } from './quick-rows.js';
+import { LONGEST_ROW_BYTES, RowBuffer } from './row-buffer.js';
+import { RowCells } from './row-cells.js';
+import { RowReader } from './row-reader.js';
+import { settleMeaning } from './settle-meaning.js';
+
+/** A header is looked for in so much of the file at once; what lies before it is dropped [bytes]. */
+const VIEW_BYTES = 262_144;
+
+/**
+ * Reads delimited text.
+ * @param source the file
+ * @param options what is said about it
+ * @param lane the general lane alone gives the same record, slower
+ * @returns the record and its quality
+ * @throws InputProblem where it can't be read, Question where it can be read in several ways
+ */
+export async function readCsv(source: MeterBytes, options: ReadOptions, lane: Lane = 'quick'): Promise<MeterReading> {
+  const map = options.map ?? {};
+  const buffer = new RowBuffer(source);
+  const layout = await layoutOf(buffer, options);
+  const reader = new RowReader(layout, map);
+  await readRows(buffer, layout, reader, lane);
+  reader.problems.refuse();
+  if (reader.rows.count === 0) {
+    throw new InputProblem([{ code: 'empty-file', expected: 'rows of data under the header', found: 'none' }]);
+  }
+  const result = settleMeaning({ layout, reader, map, options });
+  return closeReading({ ...result, notes: [...fileNotes(source, layout, reader), ...result.notes] }, map);
+}
+
+async function layoutOf(buffer: RowBuffer, { map = {} }: ReadOptions): Promise<CsvLayout> {
+  let tabular = false;
+  for (;;) {
+    while (buffer.end - buffer.start < VIEW_BYTES && (await buffer.more()));
+    const layout = findLayout(buffer, map);
+    if (layout !== null) return layout;
+    tabular ||= looksTabular(buffer);
+    if (buffer.ended) break;
+    dropRows(buffer);
+    await buffer.more();
+  }
+  if (tabular) {
+    const expected = 'a header row that names the columns, or a map that numbers them';
+    throw new InputProblem([{ code: 'no-active-column', row: 1, expected, found: 'rows of data without names' }]);
+  }
+  const expected = 'a meter file: delimited text under a header row, or NEM12';
+  throw new InputProblem([{ code: 'unknown-format', expected, found: 'a file without a row of column names' }]);
+}
+
+/** Drops what has been looked at, but for the last rows: the header may be among them and its data behind them. */
+function dropRows(buffer: RowBuffer): void {
+  const { bytes, rowEnd, end } = buffer;
+  let keep = end;
+  for (let rows = 0; rows < 4 && keep > buffer.start; rows++) keep = bytes.lastIndexOf(rowEnd, keep - 1);
+  if (keep <= buffer.start) {
+    buffer.refuseEndlessRow();
+    return;
+  }
+  for (let at = buffer.start; at <= keep; at++) if (bytes[at] === rowEnd) buffer.rowsBefore++;
+  buffer.start = keep + 1;
+}
+
+/** Which lane the rows go through: the quick one as far as it goes, or the general one alone. */
+export type Lane = 'quick' | 'general';
+
+async function readRows(buffer: RowBuffer, layout: CsvLayout, reader: RowReader, lane: Lane): Promise<void> {
+  const plan = lane === 'general' ? null : reader.quickPlan();
+  const quick = plan === null ? null : new QuickRows(reader.rows, plan);
+  const cells = new RowCells();
+  do {
+    takeRows(buffer, layout, { reader, quick, cells });
+    if (buffer.end - buffer.start > LONGEST_ROW_BYTES) buffer.refuseEndlessRow();
+  } while (await buffer.more());
+  if (buffer.end > buffer.start) refuseOpenQuote(buffer.rowsBefore + 1);
+}
+
+/** Takes every whole row of the buffer: as far as it goes by the quick lane, the row that stops it by the general one. */
+function takeRows(
+  buffer: RowBuffer,
+  layout: CsvLayout,
+  { reader, quick, cells }: { reader: RowReader; quick: QuickRows | null; cells: RowCells },
+): void {
+  const marks = { delimiter: layout.delimiter, rowEnd: buffer.rowEnd };
+  for (;;) {
+    quick?.takeFrom(buffer, reader.mark.sign);
+    const next = cells.split(buffer.bytes, buffer.start, buffer.end, marks);
+    if (next < 0) return;
+    buffer.start = next;
+    buffer.rowsBefore++;
+    if (buffer.rowsBefore <= layout.lastHeaderRow) continue;
+    const before = reader.rows.count;
+    reader.take(cells, buffer.rowsBefore);
+    if (reader.rows.count > before) quick?.learn(cells);
+  }
+}
+
+function refuseOpenQuote(row: number): never {
+  const expected = 'a closing quotation mark';
+  throw new InputProblem([{ code: 'unreadable', row, expected, found: 'the end of the file' }]);
+}
+
+function fileNotes(source: MeterBytes, layout: CsvLayout, { headers, totals }: RowReader): Remark[] {
+  return [
+    ...(source.encoding === 'utf-8' ? [] : [note('encoding-converted', { encoding: source.encoding })]),
+    ...(layout.headerRow > 1 ? [note('rows-before-header', { rows: layout.headerRow - 1 })] : []),
+    ...(headers.count > 0 ? [note('header-repeated', { rows: headers.count })] : []),
+    ...(totals.count > 0 ? [note('total-rows-left-out', { rows: totals.count })] : []),
+  ];
+}

@@ -1,0 +1,126 @@
+import { dayNumber } from '#libs/engine/index.js';
+import { mixedIntervals } from '../record/mixed-intervals.js';
+import type { RowProblems } from '../row-problems.js';
+import { datePartsOf, readStamp, type Stamp } from '../time/stamp-text.js';
+import type { StampedRows } from '../time/stamped-rows.js';
+import type { RowCells } from './row-cells.js';
+import type { TimeColumns } from './time-columns.js';
+
+const DAY_S = 86_400;
+/** Offsets a single place has had in the life of a meter; more of them are clock times misread. */
+const MOST_OFFSETS = 4;
+
+/** Reads the stamps of rows and keeps them, checking that all are written the same way. */
+export class RowStamps {
+  readonly rows: StampedRows;
+  readonly #time: TimeColumns;
+  readonly #problems: RowProblems;
+  readonly #offsets = new Set<number>();
+
+  constructor(rows: StampedRows, time: TimeColumns, problems: RowProblems) {
+    this.rows = rows;
+    this.#time = time;
+    this.#problems = problems;
+  }
+
+  /**
+   * The stamp of a row.
+   * @param cells the row
+   * @returns the stamp with date and clock time, or null where there is none
+   */
+  read(cells: RowCells): Stamp | null {
+    const { stamp: column, clock } = this.#time;
+    const stamp = readStamp(cells.text(column));
+    if (clock < 0) {
+      if (stamp === null || stamp.dateKey === null) return null;
+      return stamp.clockS === null ? { ...stamp, clockS: 0 } : stamp;
+    }
+    const beside = readStamp(cells.text(clock));
+    if (stamp === null || stamp.dateKey === null || beside === null || beside.clockS === null) return null;
+    return { ...beside, dateKey: stamp.dateKey, dateForm: stamp.dateForm };
+  }
+
+  /**
+   * Keeps a stamp at an index, or notes why it can't stand there.
+   * @param index row of `rows`
+   * @param stamp what was read
+   * @param cells the row, for its end column
+   */
+  keep(index: number, stamp: Stamp, cells: RowCells): void {
+    const { rows } = this;
+    const row = rows.rowNumber[index]!;
+    rows.dateForm ??= stamp.dateForm;
+    if (stamp.dateForm !== rows.dateForm) this.#refuse(row, 'a date written as in the rows before', cells);
+    rows.dateKey[index] = stamp.dateKey!;
+    rows.clockS[index] = stamp.clockS!;
+    this.#keepOffset(index, stamp.offsetS, cells);
+    const spanS = this.#spanOf(stamp, cells);
+    if (spanS !== null) this.#keepSpan(row, spanS, stamp.offsetS !== null);
+  }
+
+  #refuse(row: number, expected: string, cells: RowCells): void {
+    const { stamp, clock } = this.#time;
+    const found = [stamp, clock].filter((column) => column >= 0).map((column) => cells.text(column));
+    this.#problems.add({
+      code: 'bad-time',
+      row,
+      column: stamp + 1,
+      expected,
+      found: `"${found.join(' ').slice(0, 60)}"`,
+    });
+  }
+
+  #keepOffset(index: number, offsetS: number | null, cells: RowCells): void {
+    const { rows } = this;
+    const row = rows.rowNumber[index]!;
+    if (index === 0 && offsetS !== null) rows.offsetS = new Int32Array(rows.rowNumber.length);
+    if ((offsetS === null) !== (rows.offsetS === null)) {
+      this.#refuse(
+        row,
+        offsetS === null
+          ? 'a stamp with its offset, as in the rows before'
+          : 'a stamp without an offset, as in the rows before',
+        cells,
+      );
+      return;
+    }
+    if (offsetS === null || rows.offsetS === null) return;
+    this.#offsets.add(offsetS);
+    if (this.#offsets.size > MOST_OFFSETS)
+      this.#refuse(row, `at most ${MOST_OFFSETS} different offsets from UTC`, cells);
+    rows.offsetS[index] = offsetS;
+  }
+
+  /** From begin to end as far as the row states both [s]. */
+  #spanOf(stamp: Stamp, cells: RowCells): number | null {
+    if (stamp.untilS !== null) return modulo(stamp.untilS - stamp.clockS!, DAY_S) || DAY_S;
+    const { end } = this.#time;
+    if (end < 0) return null;
+    const until = readStamp(cells.text(end));
+    if (until === null || (until.clockS === null && until.dateKey === null)) return null;
+    const clockS = (until.clockS ?? 0) - stamp.clockS! - ((until.offsetS ?? 0) - (stamp.offsetS ?? 0));
+    if (until.dateKey !== null && until.dateForm === 'yearFirst' && stamp.dateForm === 'yearFirst') {
+      return (dayOf(until) - dayOf(stamp)) * DAY_S + clockS;
+    }
+    return modulo(clockS, DAY_S) || DAY_S;
+  }
+
+  #keepSpan(row: number, spanS: number, absolute: boolean): void {
+    const { rows } = this;
+    if (Number.isNaN(rows.spanS)) rows.spanS = spanS;
+    if (spanS === rows.spanS) return;
+    // where clocks change, the local end is off by that change
+    const off = Math.abs(modulo(spanS - rows.spanS + DAY_S / 2, DAY_S) - DAY_S / 2);
+    if (!absolute && (off === 3600 || off === 1800)) return;
+    this.#problems.add(mixedIntervals(row, rows.spanS, spanS));
+  }
+}
+
+function dayOf(stamp: Stamp): number {
+  const parts = datePartsOf(stamp.dateKey!, 'yearFirst', 'ymd')!;
+  return dayNumber(parts.year, parts.month, parts.day);
+}
+
+function modulo(value: number, by: number): number {
+  return ((value % by) + by) % by;
+}

@@ -1,0 +1,138 @@
+import { InputProblem, Stopped, type Watch } from '#libs/engine/index.js';
+
+/** Enough to recognise a format by. */
+const HEAD_BYTES = 65_536;
+
+export type Encoding = 'utf-8' | 'utf-16le' | 'utf-16be';
+
+/**
+ * The bytes of a meter file with the first of them looked at ahead.
+ * What comes out agrees with ASCII byte by byte: UTF-16 is turned into UTF-8, other codes pass as they are.
+ */
+export class MeterBytes {
+  /** the first bytes, at most 64 KiB, without a byte order mark */
+  readonly head: Uint8Array;
+  readonly encoding: Encoding;
+  readonly #chunks: AsyncGenerator<Uint8Array>;
+
+  private constructor(head: Uint8Array, encoding: Encoding, chunks: AsyncGenerator<Uint8Array>) {
+    this.head = head.subarray(0, HEAD_BYTES);
+    this.encoding = encoding;
+    this.#chunks = chunks;
+  }
+
+  /**
+   * Reads the first bytes of a source.
+   * @param source the file in chunks of any size
+   * @param options watch and size, for progress and stopping
+   * @returns the source with its head
+   */
+  static async open(
+    source: AsyncIterable<Uint8Array>,
+    options: { watch?: Watch; sizeBytes?: number } = {},
+  ): Promise<MeterBytes> {
+    const raw = watched(source, options);
+    const start = await firstOf(raw);
+    const encoding = encodingOf(start);
+    if (encoding === 'utf-8') {
+      const head = withoutMark(start);
+      return new MeterBytes(head, encoding, again(head, raw));
+    }
+    const decoded = decodedChunks(again(start, raw), encoding);
+    const head = (await decoded.next()).value ?? new Uint8Array(0);
+    return new MeterBytes(head, encoding, again(head, decoded));
+  }
+
+  /**
+   * The next chunk; it may be overwritten by whoever made it once the one after it is asked for.
+   * @returns bytes, or null at the end of the file
+   */
+  async next(): Promise<Uint8Array | null> {
+    const step = await this.#chunks.next();
+    return step.done ? null : step.value;
+  }
+
+  /** Lets the source close what it holds, where reading ends before its end. */
+  async close(): Promise<void> {
+    await this.#chunks.return(undefined);
+  }
+}
+
+async function* watched(
+  source: AsyncIterable<Uint8Array>,
+  { watch, sizeBytes }: { watch?: Watch; sizeBytes?: number },
+): AsyncGenerator<Uint8Array> {
+  let readBytes = 0;
+  for await (const chunk of source) {
+    if (watch?.stopped()) throw new Stopped('the reading was stopped');
+    yield chunk;
+    readBytes += chunk.length;
+    if (sizeBytes) watch?.report(Math.min(1, readBytes / sizeBytes));
+  }
+  watch?.report(1);
+}
+
+async function firstOf(raw: AsyncGenerator<Uint8Array>): Promise<Uint8Array> {
+  const chunks: Uint8Array[] = [];
+  let size = 0;
+  while (size < HEAD_BYTES) {
+    const step = await raw.next();
+    if (step.done) break;
+    chunks.push(step.value.slice());
+    size += step.value.length;
+  }
+  const all = new Uint8Array(size);
+  let at = 0;
+  for (const chunk of chunks) {
+    all.set(chunk, at);
+    at += chunk.length;
+  }
+  return all;
+}
+
+/** A byte order mark says it; without one, ASCII text in UTF-16 has a NUL in every other byte. */
+function encodingOf(head: Uint8Array): Encoding {
+  if (head[0] === 0xff && head[1] === 0xfe) return 'utf-16le';
+  if (head[0] === 0xfe && head[1] === 0xff) return 'utf-16be';
+  const look = Math.min(head.length - (head.length % 2), 512);
+  let even = 0;
+  let odd = 0;
+  for (let i = 0; i < look; i += 2) {
+    if (head[i] === 0) even++;
+    if (head[i + 1] === 0) odd++;
+  }
+  if (odd > 0.4 * look && even === 0) return 'utf-16le';
+  if (even > 0.4 * look && odd === 0) return 'utf-16be';
+  return 'utf-8';
+}
+
+function withoutMark(head: Uint8Array): Uint8Array {
+  return head[0] === 0xef && head[1] === 0xbb && head[2] === 0xbf ? head.subarray(3) : head;
+}
+
+async function* decodedChunks(raw: AsyncGenerator<Uint8Array>, encoding: Encoding): AsyncGenerator<Uint8Array> {
+  const decoder = new TextDecoder(encoding, { fatal: true });
+  const encoder = new TextEncoder();
+  for await (const chunk of raw) {
+    const bytes = encoder.encode(decoded(decoder, chunk));
+    if (bytes.length > 0) yield bytes;
+  }
+  decoded(decoder, null);
+}
+
+function decoded(decoder: InstanceType<typeof TextDecoder>, chunk: Uint8Array | null): string {
+  try {
+    return chunk === null ? decoder.decode() : decoder.decode(chunk, { stream: true });
+  } catch {
+    throw new InputProblem([{ code: 'unreadable', expected: 'text in UTF-16', found: 'bytes that are none' }]);
+  }
+}
+
+async function* again(head: Uint8Array, rest: AsyncGenerator<Uint8Array>): AsyncGenerator<Uint8Array> {
+  try {
+    if (head.length > 0) yield head;
+    yield* rest;
+  } finally {
+    await rest.return(undefined);
+  }
+}

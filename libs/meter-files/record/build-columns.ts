@@ -1,0 +1,163 @@
+import { InputProblem, type Problem } from '#libs/engine/index.js';
+
+/** Quantities a record is made of. */
+export const QUANTITIES = [
+  'active',
+  'exported',
+  'reactive',
+  'lagging',
+  'leading',
+  'voltage',
+  'connected',
+  'standby',
+] as const;
+
+export type Quantity = (typeof QUANTITIES)[number];
+
+/** A column of a file that gives a quantity, and how its numbers become kW, kvar or V: value × times ÷ over. */
+export interface QuantitySource {
+  quantity: Quantity;
+  /** one number a row of the file, NaN where it has none */
+  values: Float64Array;
+  /** energies of the interval, not means */
+  energy: boolean;
+  times: number;
+  over: number;
+  /** column of the file, counted from 1; 0 where the format has none */
+  column: number;
+}
+
+/** The columns of a record, one entry a valid interval, in time order. */
+export interface RecordColumns {
+  intervalS: number;
+  beginS: Float64Array;
+  activeKw: Float64Array;
+  laggingKvar: Float64Array;
+  leadingKvar: Float64Array;
+  voltageV: Float64Array | null;
+  connectedKvar: Float64Array | null;
+  standby: Uint8Array | null;
+}
+
+/** Rows in time order with the beginning of their interval. */
+export interface OrderedRows {
+  intervalS: number;
+  /** rows of the file in time order */
+  kept: Int32Array;
+  /** beginning of the interval of each row of the file, UTC [s] */
+  beginS: (row: number) => number;
+  rowNumber: Int32Array;
+}
+
+/** Columns, and what was left out of them. */
+export interface BuiltColumns {
+  columns: RecordColumns;
+  /** rows without a value in one of the columns */
+  withoutValue: number;
+  /** intervals with a negative value in a signed reactive column */
+  negativeReactive: number;
+}
+
+const MOST_PROBLEMS = 20;
+
+/**
+ * Turns rows into the columns of a record: units become kW, kvar and V, energies means of the interval
+ * (kW = kWh · 3600 ÷ intervalS), a signed reactive column is split, rows without a value are left out.
+ * @param rows in time order
+ * @param sources the columns of the file
+ * @param leadingPositive whether a positive number in a signed reactive column is leading
+ * @returns the columns
+ * @throws InputProblem where a column that can't be negative is, naming row and column
+ */
+export function buildColumns(
+  rows: OrderedRows,
+  sources: readonly QuantitySource[],
+  leadingPositive = false,
+): BuiltColumns {
+  const valid = validRows(rows.kept, sources);
+  const n = valid.length;
+  const beginS = new Float64Array(n);
+  for (let i = 0; i < n; i++) beginS[i] = rows.beginS(valid[i]!);
+  const of = (quantity: Quantity) =>
+    taken(
+      rows,
+      valid,
+      sources.find((source) => source.quantity === quantity),
+    );
+  const exported = of('exported');
+  const activeKw = of('active') ?? new Float64Array(n);
+  if (exported !== null) for (let i = 0; i < n; i++) activeKw[i]! -= exported[i]!;
+  const signed = of('reactive');
+  const lagging = of('lagging') ?? new Float64Array(n);
+  const leading = of('leading') ?? new Float64Array(n);
+  const negativeReactive = signed === null ? 0 : split(signed, lagging, leading, leadingPositive);
+  const standby = of('standby');
+  refuseNegative(rows, valid, sources);
+  const columns: RecordColumns = {
+    intervalS: rows.intervalS,
+    beginS,
+    activeKw,
+    laggingKvar: lagging,
+    leadingKvar: leading,
+    voltageV: of('voltage'),
+    connectedKvar: of('connected'),
+    standby: standby === null ? null : Uint8Array.from(standby),
+  };
+  return { columns, withoutValue: rows.kept.length - n, negativeReactive };
+}
+
+function validRows(kept: Int32Array, sources: readonly QuantitySource[]): Int32Array {
+  const valid = new Int32Array(kept.length);
+  let count = 0;
+  for (let i = 0; i < kept.length; i++) {
+    const row = kept[i]!;
+    let whole = true;
+    for (let k = 0; k < sources.length; k++) if (Number.isNaN(sources[k]!.values[row]!)) whole = false;
+    if (whole) valid[count++] = row;
+  }
+  return valid.subarray(0, count);
+}
+
+function taken(rows: OrderedRows, valid: Int32Array, source: QuantitySource | undefined): Float64Array | null {
+  if (source === undefined) return null;
+  const { values, times, over, energy } = source;
+  const { intervalS } = rows;
+  const column = new Float64Array(valid.length);
+  for (let i = 0; i < valid.length; i++) {
+    const value = (values[valid[i]!]! * times) / over;
+    // kW = kWh · 3600 ÷ intervalS
+    column[i] = energy ? (value * 3600) / intervalS : value;
+  }
+  return column;
+}
+
+/** lagging = max(Q, 0), leading = max(−Q, 0) */
+function split(signed: Float64Array, lagging: Float64Array, leading: Float64Array, leadingPositive: boolean): number {
+  let negative = 0;
+  for (let i = 0; i < signed.length; i++) {
+    const value = signed[i]!;
+    if (value < 0) negative++;
+    const kvar = leadingPositive ? -value : value;
+    // adding 0 makes −0 and 0 one value
+    lagging[i] = Math.max(kvar, 0) + 0;
+    leading[i] = Math.max(-kvar, 0) + 0;
+  }
+  return negative;
+}
+
+const NEVER_NEGATIVE: readonly Quantity[] = ['exported', 'lagging', 'leading', 'voltage', 'connected'];
+
+function refuseNegative(rows: OrderedRows, valid: Int32Array, sources: readonly QuantitySource[]): void {
+  const problems: Problem[] = [];
+  for (const { quantity, values, column } of sources) {
+    if (!NEVER_NEGATIVE.includes(quantity)) continue;
+    for (let i = 0; i < valid.length && problems.length < MOST_PROBLEMS; i++) {
+      const value = values[valid[i]!]!;
+      if (value >= 0) continue;
+      const place = { row: rows.rowNumber[valid[i]!]!, ...(column > 0 ? { column } : {}) };
+      problems.push({ code: 'out-of-range', ...place, expected: `0 or more (${quantity})`, found: `${value}` });
+    }
+  }
+  problems.sort((a, b) => a.row! - b.row!);
+  if (problems.length > 0) throw new InputProblem(problems);
+}

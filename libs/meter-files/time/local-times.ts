@@ -1,0 +1,116 @@
+import type { ZoneTable } from '#libs/engine/index.js';
+
+/** Local clock times turned into UTC. */
+export interface UtcTimes {
+  /** one a row [s]; NaN where no clock of the zone ever showed the time */
+  utcS: Float64Array;
+  /** rows of a doubled hour that were told apart by their order in the file */
+  doubledRows: number;
+  /** rows of a doubled hour that stand there once only, taken as the first of the two */
+  onceRows: number;
+}
+
+/** A change of offset and the clock times it makes ambiguous or skips. */
+interface Change {
+  /** UTC [s] */
+  atS: number;
+  beforeS: number;
+  afterS: number;
+  /** clock times from `lowS` up to `highS` happen twice, or never [s] */
+  lowS: number;
+  highS: number;
+  /** rows that fall into a doubled hour, in file order */
+  rows: number[];
+}
+
+/**
+ * Turns the clock times of a file into UTC.
+ * In a doubled hour the rows count by file order: what stands before the clock's step back is the first pass, what stands
+ * behind it the second; where the two passes alternate, the first row of a pair is the first.
+ * @param clock times as written [s]
+ * @param newestFirst whether the file runs backwards
+ * @param table the zone's offsets, over the whole span
+ * @param ends whether the stamps mark the ends of intervals: the moment of a change may then be written either way
+ * @returns times in UTC, aligned with `clock`
+ */
+export function localToUtc(clock: Float64Array, newestFirst: boolean, table: ZoneTable, ends: boolean): UtcTimes {
+  const changes = changesOf(table);
+  const result: UtcTimes = { utcS: new Float64Array(clock.length), doubledRows: 0, onceRows: 0 };
+  const n = clock.length;
+  let k = 0;
+  for (let i = 0; i < n; i++) {
+    const row = newestFirst ? n - 1 - i : i;
+    const localS = clock[row]!;
+    k = changeAhead(changes, k, localS);
+    const plainS = localS - (k > 0 ? changes[k - 1]!.afterS : table.offsetS[0]!);
+    const near = k < changes.length && localS >= changes[k]!.lowS ? changes[k] : changes[k - 1];
+    const isPlain = near === undefined || localS > near.highS;
+    result.utcS[row] = isPlain ? plainS : nearChange(near, row, { localS, plainS, ends });
+  }
+  for (const change of changes) if (change.rows.length > 0) tellApart(change, clock, result);
+  return result;
+}
+
+/** Index of the first change that the clock time does not lie wholly behind, looked for from a near one. */
+function changeAhead(changes: readonly Change[], near: number, localS: number): number {
+  let k = near;
+  while (k > 0 && localS < changes[k - 1]!.highS) k--;
+  while (k < changes.length && localS >= changes[k]!.highS) k++;
+  return k;
+}
+
+function changesOf(table: ZoneTable): Change[] {
+  const changes: Change[] = [];
+  for (let k = 1; k < table.fromS.length; k++) {
+    const atS = table.fromS[k]!;
+    const beforeS = table.offsetS[k - 1]!;
+    const afterS = table.offsetS[k]!;
+    const lowS = atS + Math.min(beforeS, afterS);
+    changes.push({ atS, beforeS, afterS, lowS, highS: atS + Math.max(beforeS, afterS), rows: [] });
+  }
+  return changes;
+}
+
+/** A clock time that a change doubles or skips, or the end of a doubled hour. */
+function nearChange(
+  change: Change,
+  row: number,
+  { localS, plainS, ends }: { localS: number; plainS: number; ends: boolean },
+): number {
+  const doubles = change.afterS < change.beforeS;
+  if (localS === change.highS && !(ends && doubles)) return plainS;
+  if (doubles) {
+    change.rows.push(row);
+    return Number.NaN;
+  }
+  // an interval that ends as the clock is put forward may be written in the old time
+  return ends && localS === change.lowS ? change.atS : Number.NaN;
+}
+
+function tellApart(change: Change, clock: Float64Array, result: UtcTimes): void {
+  const { rows } = change;
+  const back = rows.flatMap((row, i) => (i > 0 && clock[row]! < clock[rows[i - 1]!]! ? [i] : []));
+  const second = back.length === 1 ? rows.map((_, i) => i >= back[0]!) : byOccurrence(change, clock);
+  const times = new Set(rows.map((row) => clock[row]!));
+  const once = back.length === 0 && times.size === rows.length;
+  rows.forEach((row, i) => {
+    result.utcS[row] = clock[row]! - (second[i] ? change.afterS : change.beforeS);
+  });
+  const inside = rows.filter((row) => clock[row]! < change.highS).length;
+  if (once) result.onceRows += inside;
+  else result.doubledRows += inside;
+}
+
+/** First, third … row of a time is the first pass; a lone row that ends with the hour is the second, whose clock shows it. */
+function byOccurrence(change: Change, clock: Float64Array): boolean[] {
+  const total = new Map<number, number>();
+  for (const row of change.rows) total.set(clock[row]!, (total.get(clock[row]!) ?? 0) + 1);
+  const seen = new Map<number, number>();
+  return change.rows.map((row) => {
+    const localS = clock[row]!;
+    const before = seen.get(localS) ?? 0;
+    seen.set(localS, before + 1);
+    if (total.get(localS) === 1) return localS === change.highS;
+    return before % 2 === 1;
+  });
+}

@@ -1,0 +1,84 @@
+import type { Outcome } from '#libs/engine/index.js';
+import { formatMoment } from '#libs/present/local-stamp.js';
+import { HAIR, INK, STROKE } from './ink.js';
+import { LABEL, leading, type Paper, STRONG } from './paper.js';
+import type { ProposalFrame } from './proposal-frame.js';
+import type { Line, Piece, Style } from './typesetter.js';
+
+const FIRST_BASELINE = 36;
+const HEAD: Style = { ...STRONG, size: 9 };
+/** Room kept at the right for "page n of N" and for the hash. */
+const PAGE_ROOM = 90;
+const HASH_ROOM = 215;
+
+/** The lines of the header, broken for the width, and where the page below it begins. */
+export interface SetHeader {
+  title: Line[];
+  window: Line[];
+  hash: string;
+  site: string;
+  /** top of what follows [pt] */
+  contentTop: number;
+}
+
+/** Breaks the header's lines for the page's width; the same on every page. */
+export function setHeader({ type, width }: Paper, frame: ProposalFrame, outcome: Outcome): SetHeader {
+  const { record, zone } = outcome;
+  const title: Piece[] = [`Proposal ${frame.number}, revision ${frame.revision}`, { text: `, ${frame.state}` }];
+  const window = `record ${formatMoment(zone, record.firstS)} to ${formatMoment(zone, record.endS)}, ${zone.zone}`;
+  const set = {
+    title: type.wrap(title, HEAD, width - PAGE_ROOM),
+    window: type.wrap([window], LABEL, width - HASH_ROOM),
+    hash: `content ${hashInFours(frame.contentHash)}, engine ${frame.engineVersion}`,
+    site: outcome.site.name,
+  };
+  const titleEnd = FIRST_BASELINE + (set.title.length - 1) * leading(HEAD);
+  return { ...set, contentTop: titleEnd + 26 + set.window.length * leading(LABEL) };
+}
+
+/** The first 16 digits in fours, as a reader can compare them. */
+function hashInFours(hash: string): string {
+  return (hash.slice(0, 16).match(/.{1,4}/g) ?? []).join(' ');
+}
+
+/** Draws header and footer on every page, once their number is known; a reading program leaves them out. */
+export function drawHeaders(paper: Paper, header: SetHeader): void {
+  const { start, count } = paper.doc.bufferedPageRange();
+  for (let page = start; page < start + count; page++) {
+    paper.doc.switchToPage(page);
+    paper.doc.markContent('Artifact', { type: 'Pagination' });
+    drawHeader(paper, header, `page ${page - start + 1} of ${count}`);
+    drawFooter(paper, header);
+    paper.doc.endMarkedContent();
+  }
+}
+
+function drawHeader(paper: Paper, header: SetHeader, pageOf: string): void {
+  const { type, doc, left, right } = paper;
+  let y = FIRST_BASELINE;
+  type.put([pageOf], HEAD, right - type.width([pageOf], HEAD), y);
+  for (const line of header.title) {
+    type.draw(line, left, y);
+    y += leading(HEAD);
+  }
+  const bar = y - leading(HEAD) + 8.5;
+  doc.lineWidth(STROKE.line).moveTo(left, bar).lineTo(right, bar).stroke(INK);
+  y = bar + 13;
+  type.put([header.hash], LABEL, right - type.width([header.hash], LABEL), y);
+  for (const line of header.window) {
+    type.draw(line, left, y);
+    y += leading(LABEL);
+  }
+}
+
+function drawFooter(paper: Paper, header: SetHeader): void {
+  const { type, doc, left, right } = paper;
+  const y = doc.page.height - 36;
+  const note = 'A draft is not for construction.';
+  const noteWidth = type.width([note], LABEL);
+  doc.lineWidth(STROKE.hair).moveTo(left, y).lineTo(right, y).stroke(HAIR);
+  // a name too long for the line stands in full on page 1
+  const site = type.width([header.site], LABEL) < right - left - noteWidth - 20 ? header.site : 'Site: see page 1';
+  type.put([site], LABEL, left, y + 12);
+  type.put([note], LABEL, right - noteWidth, y + 12);
+}

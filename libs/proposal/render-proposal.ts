@@ -1,0 +1,85 @@
+import type { Outcome } from '#libs/engine/index.js';
+import { plainName } from '#libs/present/plain-name.js';
+import { drawHeaders, setHeader } from './page-header.js';
+import { Paper, sheet } from './paper.js';
+import type { ProposalFrame } from './proposal-frame.js';
+import { drawAssumptions, drawBasis } from './section-basis.js';
+import { drawCautions } from './section-cautions.js';
+import { drawDataQuality } from './section-data.js';
+import { drawDecision } from './section-decision.js';
+import { drawFindings } from './section-findings.js';
+import { drawHandCheck } from './section-hand-check.js';
+import { drawValidity } from './section-limits.js';
+import { drawLoad } from './section-load.js';
+import { drawMethod } from './section-method.js';
+import { drawNetwork } from './section-network.js';
+import { drawSignatures } from './section-signatures.js';
+import { drawSiteActions } from './section-site-actions.js';
+import { drawStages } from './section-stages.js';
+
+export type { ProposalFrame } from './proposal-frame.js';
+
+/**
+ * The proposal as a tagged PDF: equal outcome and frame give equal bytes.
+ * Sections 10 (sensitivity) and 11 (money) are left out in this edition; the numbers of the others stay.
+ * @param outcome the plan or judgement, its result already put in words
+ * @param frame number, revision, state, hash and sheet
+ * @returns the file's bytes
+ */
+export async function renderProposal(outcome: Outcome, frame: ProposalFrame): Promise<Uint8Array> {
+  const doc = await openDocument(outcome, frame);
+  const chunks: Buffer[] = [];
+  const finished = new Promise<void>((resolve, reject) => {
+    doc.on('data', (chunk: Buffer) => chunks.push(chunk));
+    doc.on('end', resolve);
+    doc.on('error', reject);
+  });
+  const paper = new Paper(doc);
+  const header = setHeader(paper, frame, outcome);
+  paper.begin(header.contentTop);
+  drawDecision(paper, outcome);
+  drawSignatures(paper, frame);
+  drawFindings(paper, outcome);
+  drawBasis(paper, outcome);
+  drawAssumptions(paper, outcome);
+  drawDataQuality(paper, outcome);
+  drawMethod(paper, outcome);
+  drawStages(paper, outcome);
+  drawLoad(paper, outcome);
+  drawNetwork(paper, outcome);
+  drawValidity(paper, outcome);
+  drawHandCheck(paper, outcome);
+  drawSiteActions(paper, outcome);
+  drawCautions(paper, outcome);
+  drawHeaders(paper, header);
+  paper.end();
+  doc.end();
+  await finished;
+  return Buffer.concat(chunks);
+}
+
+/** pdfkit is loaded when the first paper is wanted; dates come from the content, never from a clock. */
+async function openDocument(outcome: Outcome, frame: ProposalFrame): Promise<PDFKit.PDFDocument> {
+  const { default: PDFDocument } = await import('pdfkit');
+  const when = new Date(outcome.record.endS * 1000);
+  return new PDFDocument({
+    size: sheet(frame.paper ?? 'A4'),
+    margin: 0,
+    pdfVersion: '1.7',
+    tagged: true,
+    lang: 'en',
+    displayTitle: true,
+    bufferPages: true,
+    // no font until one of ours is asked for, so that none of the built-in ones gets in
+    font: null as unknown as string,
+    info: {
+      Title: `Power-factor correction for ${plainName(outcome.site.name)}`,
+      Subject: `Proposal ${frame.number}, revision ${frame.revision}, ${frame.state}`,
+      Keywords: frame.contentHash,
+      Creator: `Varwright engine ${frame.engineVersion}`,
+      Producer: `Varwright engine ${frame.engineVersion}`,
+      CreationDate: when,
+      ModDate: when,
+    },
+  });
+}

@@ -1,0 +1,74 @@
+import type { Outcome } from '#libs/engine/index.js';
+import { basisOfDesign, RULE_SET_WORDS } from '#libs/present/basis-of-design.js';
+import { formatNumber, formatQuantity } from '#libs/present/format-number.js';
+import { plainName } from '#libs/present/plain-name.js';
+import { remarkConsequence } from '#libs/present/remark-words.js';
+import { NOTE, type Paper } from './paper.js';
+import { drawTable } from './table.js';
+
+/** Documents with their editions, and what each was used for. */
+export function drawBasis(paper: Paper, outcome: Outcome): void {
+  const { site } = outcome;
+  paper.heading('3', `Basis of design: ${RULE_SET_WORDS[site.rules]}`, { keep: 130 });
+  paper.paragraph([
+    `${formatQuantity(site.nominalV, 'V', 'given')}, at most ${formatQuantity(site.highestV, 'V', 'given')}, ` +
+      `${formatNumber(site.frequencyHz, 'given')} Hz. Target power factor ${formatNumber(site.targetPowerFactor, 'given')} ` +
+      `at the ${site.meteredAt === 'primary' ? 'transformer’s primary' : 'board'}, held in every billing month.`,
+  ]);
+  const columns = [
+    { head: 'rule', share: 28 },
+    { head: 'edition', share: 22 },
+    { head: 'used for', share: 50 },
+  ];
+  drawTable(
+    paper,
+    columns,
+    basisOfDesign(outcome).map(({ rule, edition, usedFor }) => [rule, edition, usedFor]),
+  );
+  drawLoads(paper, outcome);
+}
+
+/** The loads that distort, in the order the single-line diagram numbers them. */
+function drawLoads(paper: Paper, { site }: Outcome): void {
+  const { distorting } = site.loads;
+  if (distorting === null || distorting.length === 0) return;
+  const columns = [
+    { head: 'load', share: 8 },
+    { head: 'that distorts', share: 46 },
+    { head: 'fundamental', share: 16, align: 'right' as const },
+    { head: 'harmonic currents, % of it', share: 40 },
+  ];
+  const rows = distorting.map(({ name, fundamentalA, spectrum, orders }, at) => {
+    const given = orders
+      ?.map(({ orderH, pct }) => `order ${formatNumber(orderH, 'given')}: ${formatNumber(pct, 'given')}`)
+      .join(', ');
+    return [
+      String(at + 1),
+      plainName(name),
+      formatQuantity(fundamentalA, 'A', 'given'),
+      given ?? (spectrum ?? '').replaceAll('-', ' '),
+    ];
+  });
+  drawTable(paper, columns, rows);
+}
+
+/** Every value that was taken because none was given, and what settles it. */
+export function drawAssumptions(paper: Paper, outcome: Outcome): void {
+  const { assumptions } = outcome.result;
+  const count = assumptions.length;
+  paper.heading(
+    '4',
+    `Assumptions: ${count === 0 ? 'none' : `${count} ${count === 1 ? 'value was' : 'values were'} not given`}`,
+  );
+  if (count === 0) {
+    paper.paragraph(['Every value was given.']);
+    return;
+  }
+  const columns = [
+    { head: 'taken', share: 44 },
+    { head: 'field', share: 26 },
+    { head: 'what settles it', share: 34 },
+  ];
+  const rows = assumptions.map((one) => [one.text, plainName(one.path ?? ''), remarkConsequence(one)]);
+  drawTable(paper, columns, rows, { style: { ...NOTE, ink: '#000000', size: 9.2 } });
+}

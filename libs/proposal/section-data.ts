@@ -1,0 +1,56 @@
+import type { Outcome } from '#libs/engine/index.js';
+import { formatNumber, formatQuantity } from '#libs/present/format-number.js';
+import { formatLength, formatMoment } from '#libs/present/local-stamp.js';
+import { plainName } from '#libs/present/plain-name.js';
+import type { Paper } from './paper.js';
+import { drawTable } from './table.js';
+
+/** What the record holds, what is missing from it, and everything its reader decided. */
+export function drawDataQuality(paper: Paper, outcome: Outcome): void {
+  const { record } = outcome.result;
+  const missing = record.missing === 0 ? 'none missing' : `${formatNumber(record.missing, 'whole')} missing`;
+  paper.heading('5', `Data quality: ${formatNumber(record.intervals, 'whole')} intervals, ${missing}`);
+  const columns = [
+    { head: 'of the record', share: 40 },
+    { head: 'value', share: 26, align: 'right' as const },
+    { head: '', share: 40 },
+  ];
+  drawTable(paper, columns, recordRows(outcome));
+  const { notes } = record;
+  if (notes.length === 0) {
+    paper.paragraph(['The file was read as it stands: nothing was repaired, reordered or left out.']);
+    return;
+  }
+  drawTable(
+    paper,
+    [{ head: 'what its reader decided', share: 1 }],
+    notes.map(({ text }) => [text]),
+  );
+}
+
+function recordRows({ result, zone }: Outcome): string[][] {
+  const { record, requirement } = result;
+  const whole = (value: number) => formatNumber(value, 'whole');
+  return [
+    ['begins', formatMoment(zone, record.beginS), plainName(zone.zone)],
+    ['ends', formatMoment(zone, record.endS), ''],
+    ['length of an interval', formatQuantity(record.intervalS, 's', 'given'), formatLength(record.intervalS)],
+    ['valid intervals', whole(record.intervals), ''],
+    ['missing intervals', whole(record.missing), 'left out, not filled; missing is not zero'],
+    ['repaired intervals', whole(record.repaired), 'only where a repair was asked for'],
+    ['repeats dropped', whole(record.duplicates), 'identical rows'],
+    ['energy', formatQuantity(record.activeKwh, 'kWh'), 'imported'],
+    ['lagging', formatQuantity(record.laggingKvarh, 'kvarh'), ''],
+    ['leading', formatQuantity(record.leadingKvarh, 'kvarh'), 'never taken off the lagging'],
+    ['power factor, lagging only', formatQuantity(record.powerFactorLagging, ''), ''],
+    ['power factor, net', formatQuantity(record.powerFactorNet, ''), ''],
+    ['greatest demand', formatQuantity(record.maxKw, 'kW'), ''],
+    ['greatest apparent power', formatQuantity(record.maxKva, 'kVA'), ''],
+    ['intervals in need', whole(requirement.intervalsInNeed), `of ${whole(record.intervals)}`],
+    ['mean need', formatQuantity(requirement.meanKvar, 'kvar'), ''],
+    ['need: half the time under', formatQuantity(requirement.p50Kvar, 'kvar'), ''],
+    ['need: 95 % of the time under', formatQuantity(requirement.p95Kvar, 'kvar'), ''],
+    ['need: 99 % of the time under', formatQuantity(requirement.p99Kvar, 'kvar'), ''],
+    ['need: at most', formatQuantity(requirement.maxKvar, 'kvar'), ''],
+  ];
+}

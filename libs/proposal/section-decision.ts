@@ -1,0 +1,223 @@
+import { cornerSet, type Outcome } from '#libs/engine/index.js';
+import { formatNumber, formatQuantity, GAP } from '#libs/present/format-number.js';
+import { plainName } from '#libs/present/plain-name.js';
+import { proposedWords } from '#libs/present/proposed-words.js';
+import { singleLine } from '#libs/present/single-line.js';
+import { countDuties, NO_PERMISSION, VERDICT_WORDS } from '#libs/present/verdict-words.js';
+import { setSingleLine } from './draw-single-line.js';
+import { HAIR, INK, PAPER, SOFT, STROKE } from './ink.js';
+import { drawVerdictMark } from './marks.js';
+import { LABEL, leading, type Paper, rise, STRONG } from './paper.js';
+import { BODY, type Line, type Style } from './typesetter.js';
+
+/** A long name takes a smaller size, so that the decision stays on the first page. */
+const TITLES: Style[] = [17, 13, 10.5].map((size) => ({ ...STRONG, size }));
+const HEADLINE: Style = { ...STRONG, size: 14.5 };
+const PADDING = 14;
+const BAND = 24;
+/** Share of the box that the sentence takes; the figures stand beside it. */
+const SENTENCE_SHARE = 0.43;
+
+/** Title and decision box: what is proposed, how it was judged, what it does not cover, and the single-line diagram. */
+export function drawDecision(paper: Paper, outcome: Outcome): void {
+  const { site } = outcome;
+  const title = [`Power-factor correction for ${plainName(site.name)}`];
+  const style = TITLES.find((one) => paper.type.wrap(title, one, paper.width).length <= 3) ?? TITLES.at(-1)!;
+  paper.paragraph(title, { style, tag: 'H1', after: 2 });
+  paper.paragraph([boardWords(outcome)], { style: { ...BODY, ink: SOFT }, after: 10 });
+  drawBox(paper, outcome);
+}
+
+function boardWords({ site }: Outcome): string {
+  const { transformers } = site.supply;
+  const board = `${formatQuantity(site.nominalV, 'V', 'given')} main board, ${formatNumber(site.frequencyHz, 'given')}${GAP}Hz`;
+  const ratings = transformers.map(({ ratedKva }) => formatQuantity(ratedKva, 'kVA', 'given')).join(', ');
+  if (transformers.length === 0) return `${board}, no transformer given.`;
+  const meter = site.meteredAt === 'primary' ? 'metered on the primary' : 'metered at the board';
+  return `${board}, ${transformers.length === 1 ? 'one transformer' : `${transformers.length} transformers in parallel`} of ${ratings}, ${meter}.`;
+}
+
+interface Paragraph {
+  lines: Line[];
+  style: Style;
+  after: number;
+}
+
+/** The sentences of the box: proposed, judged, not covered. */
+function sentences(paper: Paper, outcome: Outcome, width: number): Paragraph[] {
+  const { result } = outcome;
+  const count = countDuties(result.duties);
+  const set = (text: string, style: Style, after: number, indent = 0): Paragraph => ({
+    lines: paper.type.wrap([text], style, width - indent),
+    style,
+    after,
+  });
+  const judged =
+    result.duties.length === 0
+      ? 'Nothing is connected, so no row was judged.'
+      : `${count.judged} rows judged: ${count.clear} within limits, ${count.watch} near a limit, ${count.avoid} over a limit. ` +
+        `${count.notJudged} not judged.`;
+  return [
+    set(`Proposed: ${proposedWords(outcome)}`, HEADLINE, 5),
+    set(verdictSentence(outcome), STRONG, 6, 18),
+    set(judged, BODY, 5),
+    set(`Does not cover: ${notCovered(outcome)}.`, BODY, 5),
+    set(NO_PERMISSION, BODY, 0),
+  ];
+}
+
+function verdictSentence({ result, site }: Outcome): string {
+  const corners = cornerSet(site.supply, site.loads, site.nominalV).corners.length;
+  const levels = result.bank.levelsKvar.length;
+  const words = VERDICT_WORDS[result.verdict];
+  if (result.bank.stages.length === 0) return words;
+  return result.verdict === 'clear'
+    ? `${words} at all ${levels} levels and in all ${corners} corners computed`
+    : `${words}; ${levels} levels and ${corners} corners computed`;
+}
+
+function notCovered({ result, site }: Outcome): string {
+  const parts = [
+    'costs and savings',
+    'ageing and changes of the load',
+    'rating of breakers and cables beyond section 7',
+  ];
+  if (site.loads.distorting === null || site.loads.backgroundPct === null)
+    parts.unshift('distortion, since loads or background are unknown');
+  if (result.record.missing > 0)
+    parts.push(`${formatNumber(result.record.missing, 'whole')} intervals missing from the record`);
+  return parts.join('; ');
+}
+
+/** Deciding figures, label and value. */
+function keyFigures({ result, site }: Outcome): [string, string][] {
+  const { requirement, operation, network } = result;
+  const factors = (months: readonly { powerFactorLagging: number | null }[]) =>
+    months.flatMap(({ powerFactorLagging: value }) => (value === null ? [] : [value]));
+  const lowest = (values: number[]) => (values.length === 0 ? '–' : formatNumber(Math.min(...values)));
+  const full = network.levels.filter((level) => level.case === 'nominal').at(-1);
+  const distortion = result.duties.find(({ name, verdict }) => name === 'voltage distortion' && verdict !== null);
+  return [
+    ['needed, at most', formatQuantity(requirement.maxKvar, 'kvar')],
+    ['needed, 99 %', formatQuantity(requirement.p99Kvar, 'kvar')],
+    ['effective', formatQuantity(result.bank.effectiveKvar, 'kvar')],
+    ['target', formatNumber(site.targetPowerFactor, 'given')],
+    ['set point', formatNumber(result.control.setPointPowerFactor, 'given')],
+    ['lowest month before', lowest(factors(requirement.months))],
+    ['lowest month after', lowest(factors(operation.months))],
+    ['in target', formatQuantity(operation.shareInTargetPct, '%')],
+    [
+      'resonance, all in',
+      full?.parallelOrderH == null || full.levelKvar === 0 ? '–' : `order${GAP}${formatNumber(full.parallelOrderH)}`,
+    ],
+    ['voltage distortion', distortion === undefined ? '–' : formatQuantity(distortion.value, '%')],
+    ['its limit', distortion === undefined ? '–' : formatQuantity(distortion.limit, '%', 'given')],
+    ['switchings', formatNumber(operation.totalSwitchings, 'whole')],
+  ];
+}
+
+function drawBox(paper: Paper, outcome: Outcome): void {
+  const inner = { x: paper.left + PADDING, width: paper.width - 2 * PADDING };
+  const textWidth = SENTENCE_SHARE * inner.width - 12;
+  const text = sentences(paper, outcome, textWidth);
+  const textHeight = text.reduce((sum, { lines, style, after }) => sum + lines.length * leading(style) + after, 0);
+  const figures = keyFigures(outcome);
+  const rowHeight = leading(BODY) + 4.4;
+  const figuresHeight = Math.ceil(figures.length / 2) * rowHeight;
+  const diagram = setSingleLine(paper, singleLine(outcome), inner.width);
+  const band = outcome.result.verdict === 'avoid' ? BAND : 0;
+  const upper = Math.max(textHeight, figuresHeight) + 2 * PADDING;
+  const whole = band + upper + diagram.height + PADDING;
+  // with the longest of names the diagram takes a box of its own on the next page
+  const apart = whole + 4 > paper.bottom - paper.y;
+  const top = paper.y;
+  if (band > 0) drawBand(paper, top);
+  drawSentences(paper, text, { x: inner.x, y: top + band + PADDING, verdict: outcome.result.verdict });
+  const right = { x: inner.x + SENTENCE_SHARE * inner.width, width: (1 - SENTENCE_SHARE) * inner.width };
+  drawFigures(paper, figures, { ...right, y: top + band + PADDING, rowHeight });
+  if (apart) {
+    drawFrame(paper, top, band + upper);
+    paper.y = top + band + upper + 14;
+    paper.need(diagram.height + 2 * PADDING);
+    diagram.draw(inner.x, paper.y + PADDING);
+    drawFrame(paper, paper.y, diagram.height + 2 * PADDING);
+    paper.y += diagram.height + 2 * PADDING + 4;
+    return;
+  }
+  paper.rule({ y: top + band + upper - 4, from: inner.x, to: inner.x + inner.width, ink: HAIR });
+  diagram.draw(inner.x, top + band + upper + 8);
+  drawFrame(paper, top, whole);
+  paper.y = top + whole + 4;
+}
+
+function drawFrame(paper: Paper, top: number, height: number): void {
+  paper.artifact(() => {
+    const { doc } = paper;
+    doc.lineWidth(STROKE.frame).rect(paper.left, top, paper.width, height).stroke(INK);
+    doc
+      .lineWidth(STROKE.tap + 1)
+      .moveTo(paper.left - 0.7, top)
+      .lineTo(paper.right + 0.7, top)
+      .stroke(INK);
+  });
+}
+
+/** Across the box where a limit is exceeded: black, with its mark reversed. */
+function drawBand(paper: Paper, top: number): void {
+  const style: Style = { ...STRONG, size: 11, ink: PAPER };
+  paper.artifact(() => {
+    const { doc, left, width } = paper;
+    doc.rect(left, top, width, BAND).fill(INK);
+    doc.rect(left + PADDING, top + 7.5, 10, 10).fill(PAPER);
+    doc
+      .lineWidth(1.6)
+      .moveTo(left + PADDING + 1.6, top + 15.9)
+      .lineTo(left + PADDING + 8.4, top + 9.1)
+      .stroke(INK);
+  });
+  paper.tagged('P', () => {
+    const words = `${VERDICT_WORDS.avoid[0]!.toUpperCase()}${VERDICT_WORDS.avoid.slice(1)}: not to be built as it stands`;
+    paper.type.put([words], style, paper.left + PADDING + 18, top + 16);
+  });
+}
+
+function drawSentences(
+  paper: Paper,
+  text: readonly Paragraph[],
+  at: { x: number; y: number; verdict: Outcome['result']['verdict'] },
+): void {
+  let { y } = at;
+  text.forEach(({ lines, style, after }, n) => {
+    const indent = n === 1 ? 18 : 0;
+    if (n === 1) {
+      paper.artifact(() => drawVerdictMark(paper.doc, at.verdict, { x: at.x + 5, y: y + rise(style) - 3.4 }, 4));
+    }
+    paper.tagged('P', () => paper.lines(lines, style, { x: at.x + indent, y }));
+    y += lines.length * leading(style) + after;
+  });
+}
+
+interface FigureArea {
+  x: number;
+  y: number;
+  width: number;
+  rowHeight: number;
+}
+
+/** Two columns of label and value on hairlines, filled downwards. */
+function drawFigures(paper: Paper, figures: readonly [string, string][], area: FigureArea): void {
+  const half = Math.ceil(figures.length / 2);
+  const gutter = 18;
+  const width = (area.width - gutter) / 2;
+  figures.forEach(([label, value], n) => {
+    const x = area.x + (n >= half ? width + gutter : 0);
+    const y = area.y + (n % half) * area.rowHeight;
+    const baseline = y + rise(BODY);
+    paper.tagged('P', () => {
+      paper.type.put([label], LABEL, x, baseline);
+      const line = paper.type.line([value], STRONG);
+      paper.type.draw(line, x + width - line.width, baseline);
+    });
+    paper.rule({ y: y + area.rowHeight - 2.6, from: x, to: x + width, ink: HAIR });
+  });
+}

@@ -1,0 +1,62 @@
+import { AMBIENT_CATEGORIES, cornerSet, type Outcome, OVERVOLTAGE_DURATIONS } from '#libs/engine/index.js';
+import { formatNumber, formatQuantity, formatRange } from '#libs/present/format-number.js';
+import { formatMoment } from '#libs/present/local-stamp.js';
+import type { Paper } from './paper.js';
+import { drawTable } from './table.js';
+
+/** Within what the verdict was found, and what was not looked at. */
+export function drawValidity(paper: Paper, outcome: Outcome): void {
+  paper.heading('12', 'Limits of validity: the verdict holds for what was computed');
+  const columns = [
+    { head: 'what', share: 26 },
+    { head: 'judged for', share: 74 },
+  ];
+  drawTable(paper, columns, validityRows(outcome), { after: 6 });
+  paper.paragraph([
+    'The range of each input within which the verdict stays the same is not computed in this edition (section 10), nor are ' +
+      'costs and savings (section 11). Ageing, growth or loss of load, a stage or a transformer out of service: plan again.',
+  ]);
+  if (outcome.site.rules === 'iec' && outcome.bank.groups.length > 0) {
+    const times = OVERVOLTAGE_DURATIONS.map(
+      ({ ratio, duration }) => `${formatNumber(ratio, 'given')} ${duration}`,
+    ).join('; ');
+    paper.paragraph([`A capacitor carries, as a multiple of its rated voltage: ${times} (IEC 60831-1).`]);
+  }
+}
+
+function validityRows(outcome: Outcome): string[][] {
+  const { site, record, zone, bank, result } = outcome;
+  const { corners } = cornerSet(site.supply, site.loads, site.nominalV);
+  const { faultLevelMva } = site.supply;
+  const present = (result.network.levels[0]?.orders ?? []).map(({ orderH }) => formatNumber(orderH, 'given'));
+  const rows = [
+    [
+      'load',
+      `the record from ${formatMoment(zone, record.firstS)} to ${formatMoment(zone, record.endS)}, no other time`,
+    ],
+    [
+      'voltage at the bus',
+      `${formatQuantity(site.nominalV, 'V', 'given')} nominal, at most ${formatQuantity(site.highestV, 'V', 'given')}`,
+    ],
+    ['fault level', formatRange({ low: faultLevelMva.min, high: faultLevelMva.max }, 'MVA')],
+    ['damping load', formatRange({ low: 0, high: site.loads.dampingKw.max }, 'kW')],
+    ['tolerances', 'capacitance 0.95 to 1.10 and inductance 0.97 to 1.03 of the nameplate, all stages alike'],
+    ['corners', `${corners.length}, nominal included, at every one of ${result.bank.levelsKvar.length} levels`],
+    [
+      'orders',
+      present.length === 0
+        ? 'none present'
+        : `${present.join(', ')}; none above 50, none between whole orders unless listed`,
+    ],
+    ['network', 'balanced, one bus; reactances in proportion to the order or its inverse'],
+  ];
+  if (site.asOf !== null) rows.push(['as of', site.asOf]);
+  if (bank.ambientCategory !== null) {
+    const [most, day, year] = AMBIENT_CATEGORIES[bank.ambientCategory];
+    rows.push([
+      'ambient',
+      `category ${bank.ambientCategory}: at most ${most} °C, ${day} °C over 24 h, ${year} °C over a year`,
+    ]);
+  } else if (bank.groups.length > 0) rows.push(['ambient', 'category not stated: temperatures are not judged']);
+  return rows;
+}

@@ -1,0 +1,84 @@
+import type { Outcome } from '#libs/engine/index.js';
+import { formatNumber, formatQuantity, GAP } from '#libs/present/format-number.js';
+import { INK, STROKE } from './ink.js';
+import type { Paper } from './paper.js';
+import { type Cell, drawTable } from './table.js';
+
+/** What is to be done and noted on site before the bank goes into service. */
+export function drawSiteActions(paper: Paper, outcome: Outcome): void {
+  if (outcome.bank.groups.length === 0) {
+    paper.heading('14', 'Site actions: none, since nothing is built');
+    paper.paragraph(['Plan again when load, tariff or supply change.']);
+    return;
+  }
+  const actions = siteActions(outcome);
+  paper.heading('14', `Site actions: ${actions.length} before the bank goes into service`);
+  const columns = [
+    { head: '', share: 5 },
+    { head: 'action', share: 62 },
+    { head: 'expected', share: 25 },
+    { head: 'found', share: 16 },
+  ];
+  const rows = actions.map(([action, expected], at): Cell[] => [String(at + 1), action, expected, blank(paper)]);
+  drawTable(paper, columns, rows);
+}
+
+function blank(paper: Paper): Cell {
+  return {
+    pieces: [''],
+    inset: 0,
+    draw: ({ x, y, width, height }) => {
+      paper.doc
+        .lineWidth(STROKE.tick)
+        .moveTo(x, y + height + 1)
+        .lineTo(x + width, y + height + 1)
+        .stroke(INK);
+    },
+  };
+}
+
+function siteActions(outcome: Outcome): [string, string][] {
+  const { site, result, bank } = outcome;
+  const { control, charge } = result;
+  const currents = bank.groups.map((group, at) => {
+    const stage = result.bank.stages.find(
+      (one) => one.ratedKvar === group.ratedKvar && one.reactorPct === group.reactorPct,
+    );
+    const ampere = ((stage?.effectiveKvar ?? 0) * 1000) / (Math.sqrt(3) * site.nominalV);
+    return `group${GAP}${at + 1}: ${formatQuantity(ampere, 'A')}`;
+  });
+  const capacitance = charge.stages.map(
+    (stage) => `group${GAP}${stage.group + 1}: ${formatQuantity(stage.capacitanceUf, 'µF')}`,
+  );
+  const resistors = charge.stages.map(
+    (stage) => `group${GAP}${stage.group + 1}: ${formatQuantity(stage.requiredOhm, 'Ω')} or less`,
+  );
+  return [
+    [
+      'Compare the nameplates of transformer, capacitors and reactors with section 7 and the single-line diagram.',
+      'as printed',
+    ],
+    [
+      'Ask the network operator for the greatest and least fault level, in writing.',
+      `${formatNumber(site.supply.faultLevelMva.min, 'given')} and ${formatQuantity(site.supply.faultLevelMva.max, 'MVA', 'given')}`,
+    ],
+    ['Choose devices and cables for the greatest fault current by its own standard.', 'not from this paper'],
+    ['Measure the capacitance of one delta phase of every stage, discharged and isolated.', capacitance.join('; ')],
+    ['Measure or read the discharge resistors.', resistors.join('; ')],
+    [
+      'Check the place and direction of the controller’s current transformer: it sees the load and the bank.',
+      'sign of kvar agrees with the meter',
+    ],
+    [
+      'Set the controller.',
+      `${formatNumber(control.setPointPowerFactor, 'given')}; step ${formatQuantity(control.stepDelayS, 's', 'given')}; reconnection ${formatQuantity(control.reconnectDelayS, 's', 'given')}`,
+    ],
+    ['Test insulation, torque of the connections, and phase rotation.', 'by the maker’s values'],
+    [
+      'Switch stage by stage and note the current of each at the voltage then measured.',
+      `at ${formatQuantity(site.nominalV, 'V', 'given')}, ${currents.join('; ')}`,
+    ],
+    ['Measure voltage distortion at every level, before and after.', 'section 9.6'],
+    ['Put a label on each stage with its waiting time.', 'section 7.3'],
+  ];
+}

@@ -1,0 +1,166 @@
+import { dischargeS, type Outcome, ratedA, type StageGroup } from '#libs/engine/index.js';
+import { countWord } from '#libs/present/findings.js';
+import { formatNumber, formatQuantity, formatRange, GAP } from '#libs/present/format-number.js';
+import { formatLength } from '#libs/present/local-stamp.js';
+import { bothRatings } from '#libs/present/single-line.js';
+import { NOTE, type Paper } from './paper.js';
+import { type Column, drawTable } from './table.js';
+
+/** A fuse for a capacitor stage, as a multiple of its rated current; common practice, no source. */
+const FUSE_RATIO = { low: 1.6, high: 2 };
+
+/** Stages with both ratings, what protects them, and how long each keeps its charge. */
+export function drawStages(paper: Paper, outcome: Outcome): void {
+  const { bank, result } = outcome;
+  const count = result.bank.stages.length;
+  if (count === 0) {
+    paper.heading('7', 'Stages, protection, discharge: there is no bank');
+    paper.paragraph(['Nothing is connected, so nothing has to be protected or discharged.']);
+    return;
+  }
+  const kvar = formatQuantity(result.bank.effectiveKvar, 'kvar');
+  paper.heading('7', `Stages, protection, discharge: ${countWord(count)} ${count === 1 ? 'stage' : 'stages'}, ${kvar}`);
+  paper.heading('7.1', 'Stages, both ratings with their voltages', { level: 3 });
+  drawTable(
+    paper,
+    STAGE_COLUMNS,
+    bank.groups.map((group, at) => stageRow(outcome, group, at)),
+    { after: 4 },
+  );
+  paper.paragraph([levelWords(outcome)], { style: NOTE });
+  drawControl(paper, outcome);
+  drawProtection(paper, outcome);
+  drawDischarge(paper, outcome);
+}
+
+const STAGE_COLUMNS: Column[] = [
+  { head: 'group', share: 8 },
+  { head: 'stages', share: 9, align: 'right' },
+  { head: 'ratings of one stage', share: 38 },
+  { head: 'reactor', share: 12, align: 'right' },
+  { head: 'on the capacitor', share: 18, align: 'right' },
+  { head: 'tuned order', share: 14, align: 'right' },
+  { head: 'switched', share: 14 },
+];
+
+function stageRow(outcome: Outcome, group: StageGroup, at: number): string[] {
+  const stage = outcome.result.bank.stages.find(
+    (one) => one.ratedKvar === group.ratedKvar && one.ratedV === group.ratedV && one.reactorPct === group.reactorPct,
+  );
+  return [
+    String(at + 1),
+    String(group.count),
+    bothRatings(outcome, group),
+    group.reactorPct > 0 ? formatQuantity(group.reactorPct, '%', 'given') : 'none',
+    formatQuantity(stage?.capacitorV ?? null, 'V'),
+    formatQuantity(stage?.tunedOrderH ?? null, ''),
+    group.fixed ? 'never' : 'yes',
+  ];
+}
+
+function levelWords({ result }: Outcome): string {
+  const levels = result.bank.levelsKvar.map((kvar) => formatNumber(kvar));
+  const listed =
+    levels.length <= 24 ? levels.join(', ') : `${levels.slice(0, 12).join(', ')} … ${levels.slice(-4).join(', ')}`;
+  return `${levels.length} levels, kvar: ${listed}.`;
+}
+
+function drawControl(paper: Paper, { result }: Outcome): void {
+  const { control } = result;
+  const modes = { nearestLevel: 'nearest level', oneByOne: 'one by one' };
+  const wear = { even: 'by turns', inOrder: 'in order' };
+  paper.paragraph([
+    `Controller: set point ${formatNumber(control.setPointPowerFactor, 'given')}, ${modes[control.mode]}, response ` +
+      `${formatNumber(control.responseRatio, 'given')} of the smallest stage, step delay ${formatQuantity(control.stepDelayS, 's', 'given')}, ` +
+      `reconnection delay ${formatQuantity(control.reconnectDelayS, 's', 'given')}, equal stages ${wear[control.wear]}.`,
+  ]);
+}
+
+function drawProtection(paper: Paper, outcome: Outcome): void {
+  const { bank, result, site } = outcome;
+  paper.heading(
+    '7.2',
+    `Protection: conductors and disconnector for ${formatQuantity(result.conductorMinA, 'A')} or more`,
+    { level: 3 },
+  );
+  const columns: Column[] = [
+    { head: 'group', share: 8 },
+    { head: 'rated current', share: 16, align: 'right' },
+    { head: `at ${formatQuantity(site.nominalV, 'V', 'given')}`, share: 16, align: 'right' },
+    { head: 'fuse of a stage', share: 22, align: 'right' },
+    { head: 'basis', share: 50 },
+  ];
+  const rows = bank.groups.map((group, at) => {
+    const rated = ratedA(group);
+    const { low, high } = FUSE_RATIO;
+    const stage = result.bank.stages.find(
+      (one) => one.ratedKvar === group.ratedKvar && one.reactorPct === group.reactorPct,
+    );
+    const effectiveA = ((stage?.effectiveKvar ?? 0) * 1000) / (Math.sqrt(3) * site.nominalV);
+    return [
+      String(at + 1),
+      formatQuantity(rated, 'A'),
+      formatQuantity(effectiveA, 'A'),
+      formatRange({ low: low * rated, high: high * rated }, 'A', 'computed'),
+      `${formatNumber(low, 'given')} to ${formatNumber(high, 'given')} × rated current, high breaking capacity: common practice, no source`,
+    ];
+  });
+  drawTable(paper, columns, rows, { after: 4 });
+  paper.paragraph([
+    'Not computed here: short-time withstand and breaking capacity, which need the greatest fault current by its own standard ' +
+      '(voltage factor, least impedance, motor contribution) and not the fault level printed for resonance; selectivity; cable ' +
+      'by length, laying and temperature; heat and air flow of the enclosure.',
+  ]);
+}
+
+function drawDischarge(paper: Paper, outcome: Outcome): void {
+  const { bank, result } = outcome;
+  const waits = bank.groups.map((group, at) => waitS(outcome, group, at));
+  const longest = Math.max(...waits);
+  paper.heading('7.3', `Discharge: wait ${waitWords(longest)} after switching off, then prove dead`, { level: 3 });
+  const columns: Column[] = [
+    { head: 'group', share: 8 },
+    { head: 'capacitance, one phase', share: 20, align: 'right' },
+    { head: 'to be reached', share: 22, align: 'right' },
+    { head: 'resistor at most', share: 19, align: 'right' },
+    { head: 'for the delay', share: 18, align: 'right' },
+    { head: 'fitted', share: 15, align: 'right' },
+    { head: 'its loss', share: 12, align: 'right' },
+    { head: 'waiting time', share: 22, align: 'right' },
+  ];
+  const rows = result.charge.stages.map((stage, at) => [
+    String(stage.group + 1),
+    formatQuantity(stage.capacitanceUf, 'µF'),
+    `${formatQuantity(stage.dischargeToV, 'V', 'given')} in ${formatQuantity(stage.dischargeWithinS, 's', 'given')}`,
+    formatQuantity(stage.dischargeMaxOhm, 'Ω'),
+    formatQuantity(stage.reconnectMaxOhm, 'Ω'),
+    bank.groups[at]?.dischargeOhm == null ? 'not stated' : formatQuantity(bank.groups[at].dischargeOhm, 'Ω', 'given'),
+    formatQuantity(stage.dischargeLossW, 'W'),
+    waitWords(waits[at]!),
+  ]);
+  drawTable(paper, columns, rows, { after: 4 });
+  const required = result.charge.stages.map(
+    (stage) => `group${GAP}${stage.group + 1}: ${formatQuantity(stage.requiredOhm, 'Ω')}`,
+  );
+  paper.paragraph([
+    `Required, the smaller of the two, across each delta phase: ${required.join('; ')}. A stage is switched in again only below ` +
+      `10 % of its rated voltage, so the reconnection delay of ${formatQuantity(result.control.reconnectDelayS, 's', 'given')} runs by hand as well. ` +
+      'The loss is that of the required resistor in one phase. Section 15 says how to make safe before touching.',
+  ]);
+}
+
+/** The standard's time, or the fitted resistor's own where that is longer. */
+function waitS(outcome: Outcome, group: StageGroup, at: number): number {
+  const stage = outcome.result.charge.stages[at]!;
+  const fitted =
+    group.dischargeOhm === null
+      ? 0
+      : dischargeS(group.dischargeOhm, stage.capacitanceUf, group.ratedV, stage.dischargeToV);
+  return Math.max(stage.dischargeWithinS, fitted);
+}
+
+function waitWords(seconds: number): string {
+  const whole = Math.ceil(seconds - 1e-6);
+  const plain = formatQuantity(whole, 's', 'given');
+  return whole >= 60 ? `${plain} (${formatLength(whole)})` : plain;
+}
