@@ -123,7 +123,7 @@ export class DemandReading {
   }
 }
 
-// A block belongs to the period of its first interval.
+// No block reaches over the end of a period, so the period of any of its intervals is its own.
 function periodsOfBlocks(shape: DemandShape, periods: Grouping): Int32Array[] {
   const { selection, blocks } = shape;
   return blocks.sizes.map((sizes, m) => {

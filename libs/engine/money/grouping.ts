@@ -17,19 +17,28 @@ export interface Grouping {
 export type Period = 'month' | 'day' | 'hour' | 'interval';
 
 /**
- * Blocks of the local clock, counted from local midnight; the doubled hour of an autumn night shares its blocks.
+ * Blocks of the local clock, counted from local midnight; the doubled hour of an autumn night shares its blocks. A
+ * block that runs over the end of a period is cut there.
  * @param calendar the record by the site's clock
  * @param selection the intervals to be grouped
  * @param blockS length of a block [s]
+ * @param within periods of the same selection, null for whole months
  * @returns the grouping
  * @source method-money
  */
-export function demandBlocks(calendar: TariffCalendar, selection: Selection, blockS: number): Grouping {
+export function demandBlocks(
+  calendar: TariffCalendar,
+  selection: Selection,
+  blockS: number,
+  within: Grouping | null,
+): Grouping {
   const perDay = Math.ceil(DAY_S / blockS);
-  return groupIntervals(selection, (i) => {
+  const days = Math.ceil(Math.abs(calendar.localS[calendar.localS.length - 1] ?? 0) / DAY_S) + 2;
+  return groupIntervals(selection, (i, k) => {
     const local = calendar.localS[i]!;
     const day = Math.floor(local / DAY_S);
-    return day * perDay + Math.floor((local - day * DAY_S) / blockS);
+    const block = day * perDay + Math.floor((local - day * DAY_S) / blockS);
+    return within === null ? block : within.groupOf[k]! * days * perDay + block;
   });
 }
 
@@ -53,7 +62,7 @@ export function periods(calendar: TariffCalendar, selection: Selection, per: Per
 }
 
 // Groups are numbered by their first interval. Keys ascend but where the clock is set back, so the search back is short.
-function groupIntervals(selection: Selection, keyOf: (i: number) => number): Grouping {
+function groupIntervals(selection: Selection, keyOf: (i: number, k: number) => number): Grouping {
   const { intervals, monthFrom } = selection;
   const groupOf = new Int32Array(intervals.length);
   const sizes: Float64Array[] = [];
@@ -64,7 +73,7 @@ function groupIntervals(selection: Selection, keyOf: (i: number) => number): Gro
     const counts: number[] = [];
     let highest = Number.NEGATIVE_INFINITY;
     for (let k = monthFrom[m]!; k < monthFrom[m + 1]!; k++) {
-      const key = keyOf(intervals[k]!);
+      const key = keyOf(intervals[k]!, k);
       let group = key > highest ? -1 : keys.lastIndexOf(key);
       if (group < 0) {
         group = keys.push(key) - 1;

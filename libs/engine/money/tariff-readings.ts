@@ -48,8 +48,9 @@ export class TariffReadings {
     const key = `${per} ${basis} ${selection.key}`;
     const known = this.#demands.get(key);
     if (known !== undefined) return known;
-    const blocks = demandBlocks(this.#calendar, selection, this.#demandS);
-    const made = new DemandReading({ selection, blocks, periods: this.#periods(selection, per), basis });
+    const within = this.#periods(selection, per);
+    const blocks = demandBlocks(this.#calendar, selection, this.#demandS, within);
+    const made = new DemandReading({ selection, blocks, periods: within, basis });
     this.#demands.set(key, made);
     return made;
   }
