@@ -3,7 +3,7 @@ import multipart from '@fastify/multipart';
 import { type DynamicModule, Module } from '@nestjs/common';
 import { NestFactory } from '@nestjs/core';
 import { FastifyAdapter, type NestFastifyApplication } from '@nestjs/platform-fastify';
-import type { FastifyInstance } from 'fastify';
+import type { FastifyInstance, FastifyReply } from 'fastify';
 import { InProcessJobs } from '#libs/jobs/in-process-jobs.js';
 import { WorkerPool } from '#libs/jobs/pool/worker-pool.js';
 import { openStore } from '#libs/store/open-store.js';
@@ -120,7 +120,7 @@ async function serve(
     bodyLimit: 1_000_000,
     forceCloseConnections: 'idle',
     // An address that cannot be decoded never reaches a route, nor the filter.
-    frameworkErrors: (error, _request, reply) => {
+    frameworkErrors: (error: Error, _request: unknown, reply: FastifyReply) => {
       const problem = describeError(error);
       reply.status(problem.status).type('application/problem+json').send(JSON.stringify(problem));
     },
@@ -132,7 +132,6 @@ async function serve(
   });
   const app = await NestFactory.create<NestFastifyApplication>(module, adapter, { logger: log, bodyParser: false });
   app.useGlobalFilters(new ProblemFilter(log));
-  app.enableShutdownHooks();
   await harden(fastify, { settings, log });
   await app.init();
   refuseUndeclared(routesOf(app), registered);

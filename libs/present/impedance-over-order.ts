@@ -49,7 +49,8 @@ export interface ImpedanceFigure {
  */
 export function impedanceOverOrder(outcome: Outcome, bank: Bank, name: string): ImpedanceFigure {
   const present = presentOrdersH(outcome);
-  const endH = Math.min(50, Math.max(LEAST_END_H, ...present.map((order) => order + 2)));
+  const peakH = outcome.result.network.levels.findLast((level) => level.case === 'nominal')?.parallelOrderH ?? 0;
+  const endH = Math.min(50, Math.max(LEAST_END_H, Math.ceil(peakH) + 1, ...present.map((order) => order + 2)));
   const scan = scanBank(outcome, bank, endH);
   const all = scan.levels.flatMap(({ ohm }) => [Math.min(...ohm), Math.max(...ohm)]);
   const scale = { leastOhm: Math.min(...all), mostOhm: Math.max(...all) };
@@ -136,7 +137,7 @@ function drawn({ scan, present, name, endH }: Drawing, scale: SharedScale): Char
         ? []
         : [{ part: 'site' as const, shape: 'line' as const, x: scan.ordersH, y: milli(full.ohm) }]),
     ],
-    marks: [...peakMarks(withBank, present), ...ring(peak)],
+    marks: [...peakMarks(withBank, present), ...ring(peak, endH)],
     table: {
       columns: ['level kvar', 'peak at order', 'peak mΩ'].map((head) => ({ head, right: true })),
       rows: scan.levels.map(({ levelKvar, peak: own }) => [
@@ -148,8 +149,8 @@ function drawn({ scan, present, name, endH }: Drawing, scale: SharedScale): Char
   };
 }
 
-function ring(peak: { orderH: number; impedanceOhm: number } | null): Mark[] {
-  if (peak === null) return [];
+function ring(peak: { orderH: number; impedanceOhm: number } | null, endH: number): Mark[] {
+  if (peak === null || peak.orderH > endH) return [];
   return [
     { kind: 'ring', x: peak.orderH, y: peak.impedanceOhm * 1000, text: formatNumber(peak.orderH), side: 'right' },
   ];

@@ -12,21 +12,24 @@ const SOLID_FROM_PCT = 100 * (1 + 1e-9);
  * seen from across the room.
  * @param margins shares by level and order
  * @param name what the bank is, for example "7 % reactors"
+ * @param mostLevels more levels than this are thinned to those nearest their limits, the lowest and highest kept
  * @returns chart made of cells; the greatest level on top
  */
-export function marginMap(margins: MarginMap, name: string): Chart {
-  const levels = margins.levelsKvar.map((kvar, at) => ({ kvar, shares: margins.sharePct[at]! })).reverse();
-  const over = levels.filter(({ kvar, shares }) => kvar > 0 && shares.some((share) => share > SOLID_FROM_PCT)).length;
+export function marginMap(margins: MarginMap, name: string, mostLevels = Number.POSITIVE_INFINITY): Chart {
+  const all = margins.levelsKvar.map((kvar, at) => ({ kvar, shares: margins.sharePct[at]! })).reverse();
+  const levels = nearestLimits(all, mostLevels);
+  const over = all.filter(({ kvar, shares }) => kvar > 0 && shares.some((share) => share > SOLID_FROM_PCT)).length;
   const heads = margins.ordersH.map((order) => formatNumber(order, 'given'));
   const rows = levels.map(({ kvar, shares }) => [formatNumber(kvar), ...shares.map(formatShare)]);
+  const left = levels.length < all.length ? ` The ${levels.length} of ${all.length} levels nearest their limits.` : '';
   const axis = { label: '', unit: '', scale: 'linear' as const, from: 0 };
   return {
     id: 'marginMap',
     finding:
       over === 0
         ? `${name}: every level within its limits`
-        : `${name}: ${over} of ${levels.length - 1} levels over a limit`,
-    caption: 'Harmonic voltage, % of its limit, worst corner; rows are levels in kvar, columns orders.',
+        : `${name}: ${over} of ${all.length - 1} levels over a limit`,
+    caption: `Harmonic voltage, % of its limit, worst corner; rows are levels in kvar, columns orders.${left}`,
     sentence: `Harmonic voltage as a share of its limit for ${levels.length} levels and ${heads.length} orders; the table holds every number.`,
     x: { ...axis, to: heads.length, ticks: heads.map((text, at) => ({ at: at + 0.5, text })) },
     y: { ...axis, unit: 'kvar', to: rows.length, ticks: rows.map((row, at) => ({ at: at + 0.5, text: row[0]! })) },
@@ -35,6 +38,21 @@ export function marginMap(margins: MarginMap, name: string): Chart {
     marks: levels.flatMap(({ shares }, row) => shares.map((share, column) => cell(share, { row, column }))),
     table: { columns: ['kvar', ...heads].map((head) => ({ head, right: true })), rows },
   };
+}
+
+interface LevelShares {
+  kvar: number;
+  shares: number[];
+}
+
+function nearestLimits(all: LevelShares[], most: number): LevelShares[] {
+  if (all.length <= most) return all;
+  const greatest = ({ shares }: LevelShares) => Math.max(...shares);
+  const between = all
+    .slice(1, -1)
+    .sort((a, b) => greatest(b) - greatest(a))
+    .slice(0, most - 2);
+  return [all[0]!, ...between, all.at(-1)!].sort((a, b) => b.kvar - a.kvar);
 }
 
 function cell(sharePct: number, at: { row: number; column: number }): Mark {

@@ -27,7 +27,12 @@ export function phasors(outcome: Outcome): Chart {
   const before = Math.hypot(...load);
   const after = Math.hypot(...sum);
   const amperes = (value: number) => formatQuantity(value, 'A');
-  const reach = { x: Math.max(before, after, 1), down: Math.min(load[1], sum[1], 0), up: Math.max(load[1], sum[1], 0) };
+  const reach = {
+    left: Math.min(load[0], sum[0], 0),
+    x: Math.max(before, after, 1),
+    down: Math.min(load[1], sum[1], 0),
+    up: Math.max(load[1], sum[1], 0),
+  };
   return {
     id: 'phasors',
     finding:
@@ -39,7 +44,11 @@ export function phasors(outcome: Outcome): Chart {
       `Voltage U points right. The load’s current, ${amperes(before)}, ${angleWords(load)}. ` +
       `The capacitors’ current, ${amperes(moment.bankKvar * perKva)}, leads U by 90° and points up. ` +
       `Their sum, the supply’s current, is ${amperes(after)} and ${angleWords(sum)}.`,
-    x: within(linearAxis('in phase', 'A', { least: 0, most: reach.x }, 4), { from: 0, to: reach.x * 1.3 }),
+    x: within(linearAxis('in phase', 'A', { least: reach.left, most: reach.x }, 4), {
+      // an exporting site's labels stand to the left of its arrows
+      from: reach.left < 0 ? reach.left - 0.5 * reach.x : 0,
+      to: reach.x * 1.3,
+    }),
     y: within(linearAxis('lagging downwards', 'A', { least: reach.down, most: reach.up }, 4), {
       from: reach.down * 1.12,
       to: reach.up + 0.06 * reach.x,
@@ -90,6 +99,7 @@ function arrows(load: [number, number], sum: [number, number], bankA: number): M
     bank: label('bank', [load[0], (load[1] + sum[1]) / 2], bankA),
     sum: label('supply', sum, Math.hypot(...sum)),
   };
+  const outward = load[0] < 0 ? 'left' : 'right';
   const along = 1.2 * Math.max(Math.hypot(...load), Math.hypot(...sum), 1);
   const marks: Mark[] = [
     { kind: 'arrow', from: [0, 0], to: [along, 0], part: 'beyond' },
@@ -98,9 +108,9 @@ function arrows(load: [number, number], sum: [number, number], bankA: number): M
   ];
   if (bankA > 0) {
     marks.push({ kind: 'arrow', from: load, to: sum, part: 'bank' });
-    marks.push({ kind: 'label', x: ends.bank.x, y: ends.bank.y, text: ends.bank.name, side: 'right', part: 'bank' });
+    marks.push({ kind: 'label', x: ends.bank.x, y: ends.bank.y, text: ends.bank.name, side: outward, part: 'bank' });
     marks.push({ kind: 'arrow', from: [0, 0], to: sum, part: 'after' });
-    marks.push({ kind: 'label', x: sum[0], y: sum[1], text: ends.sum.name, side: 'right', part: 'after' });
+    marks.push({ kind: 'label', x: sum[0], y: sum[1], text: ends.sum.name, side: outward, part: 'after' });
   }
   marks.push({ kind: 'label', x: load[0], y: load[1], text: ends.load.name, side: 'below', part: 'site' });
   return marks;

@@ -98,7 +98,7 @@ function valueWords(name: string, value: number | string, remark: Remark): strin
 
 function seconds(value: number): string {
   const exact = formatQuantity(value, 's', 'given');
-  return value >= 120 ? `${exact} (${formatLength(value)})` : exact;
+  return value >= 120 ? `${exact} (${formatLength(Math.round(value))})` : exact;
 }
 
 /** "nearestLevel" reads "nearest level". */

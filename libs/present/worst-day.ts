@@ -34,7 +34,8 @@ export function worstDay(outcome: Outcome): Chart {
       `${formatQuantity(columns.most.load, 'kvar')}; with the bank between ${formatQuantity(columns.least.after, 'kvar')} and ` +
       `${formatQuantity(columns.most.after, 'kvar')} are left.`,
     x: clockAxis(outcome, day),
-    y: linearAxis('at the bus', 'kvar', { least, most }),
+    // room for the label above the highest point
+    y: linearAxis('at the bus', 'kvar', { least, most: most * 1.08 }),
     equalScales: false,
     series: daySeries(columns),
     marks: dayMarks(columns),

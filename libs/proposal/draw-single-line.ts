@@ -192,7 +192,8 @@ function drawBank(paper: Paper, diagram: SingleLine, { box, busY }: Place): void
   const { stages } = diagram;
   if (stages.length === 0) return;
   const area = { x: box.x + LOADS_SHARE * box.width + 8, width: (1 - LOADS_SHARE) * box.width - 8 };
-  const pitch = Math.min(24, area.width / stages.length);
+  const widest = stages.some(({ times }) => times > 1) ? 52 : 24;
+  const pitch = Math.min(widest, area.width / stages.length);
   const first = area.x + area.width - pitch * stages.length + pitch / 2;
   const last = first + pitch * (stages.length - 1);
   const middle = (first + last) / 2;

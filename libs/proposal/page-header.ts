@@ -1,5 +1,6 @@
 import type { Outcome } from '#libs/engine/index.js';
 import { formatMoment } from '#libs/present/local-stamp.js';
+import { plainName } from '#libs/present/plain-name.js';
 import { HAIR, INK, STROKE } from './ink.js';
 import { LABEL, leading, type Paper, STRONG } from './paper.js';
 import type { ProposalFrame } from './proposal-frame.js';
@@ -30,7 +31,7 @@ export function setHeader({ type, width }: Paper, frame: ProposalFrame, outcome:
     title: type.wrap(title, HEAD, width - PAGE_ROOM),
     window: type.wrap([window], LABEL, width - HASH_ROOM),
     hash: `content ${hashInFours(frame.contentHash)}, engine ${frame.engineVersion}`,
-    site: outcome.site.name,
+    site: plainName(outcome.site.name),
   };
   const titleEnd = FIRST_BASELINE + (set.title.length - 1) * leading(HEAD);
   return { ...set, contentTop: titleEnd + 26 + set.window.length * leading(LABEL) };

@@ -53,7 +53,8 @@ function drawWear(paper: Paper, outcome: Outcome): void {
   const stageRows = operation.switchings
     .slice(0, MOST_STAGES)
     .map((count, at) => [String(at + 1), formatNumber(bank.stages[at]!.effectiveKvar), formatNumber(count, 'whole')]);
-  const hourRows = operation.hoursAtLevel
+  const used = operation.hoursAtLevel.filter(({ hours: length }) => length > 0);
+  const hourRows = used
     .slice(0, MOST_STAGES)
     .map(({ levelKvar, hours: length }) => [formatNumber(levelKvar), formatNumber(length)]);
   const rowHeight = 8.6 * 1.38 + 3.2;
@@ -64,7 +65,12 @@ function drawWear(paper: Paper, outcome: Outcome): void {
   paper.y = top;
   drawTable(paper, hours, hourRows, { style: SMALL, padding: 1.6, ...right });
   paper.y = Math.max(paper.y, end);
-  if (operation.hoursAtLevel.length > MOST_STAGES || operation.switchings.length > MOST_STAGES) {
-    paper.paragraph([`The first ${MOST_STAGES} are listed; the result as JSON holds all.`], { style: NOTE });
-  }
+  const idle = operation.hoursAtLevel.length - used.length;
+  const notes = [
+    ...(idle > 0 ? [`${idle} ${idle === 1 ? 'level is' : 'levels are'} never used.`] : []),
+    ...(used.length > MOST_STAGES || operation.switchings.length > MOST_STAGES
+      ? [`The first ${MOST_STAGES} are listed; the result as JSON holds all.`]
+      : []),
+  ];
+  if (notes.length > 0) paper.paragraph([notes.join(' ')], { style: NOTE });
 }

@@ -1,4 +1,4 @@
-import type { Outcome } from '#libs/engine/index.js';
+import type { Figure, Outcome } from '#libs/engine/index.js';
 import { formatNumber, formatQuantity } from '#libs/present/format-number.js';
 import { formatMoment } from '#libs/present/local-stamp.js';
 import { workedInterval } from '#libs/present/worst-interval.js';
@@ -29,9 +29,9 @@ export function drawMethod(paper: Paper, outcome: Outcome): void {
   paper.heading('6', `Method and working: ${figures.length} figures, each with its values put in`);
   for (const sentence of METHOD) paper.paragraph([sentence], { after: 3.5 });
   drawWorked(paper, outcome);
-  paper.heading('6.2', 'Every figure', { level: 3 });
+  paper.heading('6.2', 'Every figure, with its source and the units of what was put in', { level: 3 });
   const rows = figures.map((figure): Cell[] => [
-    [figure.label, NEW_LINE, { text: figure.source, ink: SOFT, size: 8.4 }],
+    [figure.label, NEW_LINE, { text: `${figure.source}. ${unitWords(figure)}`, ink: SOFT, size: 8.4 }],
     formulaCell(figure),
     valueCell(figure),
   ]);
@@ -62,6 +62,12 @@ function columns(first: string): Column[] {
     { head: 'formula, and with the values put in', share: 50 },
     { head: 'gives', share: 18, align: 'right' },
   ];
+}
+
+/** "Q_N in kvar, U_N in V"; a pure number goes without saying. */
+function unitWords({ inputs }: Figure): string {
+  const named = inputs.filter(({ unit }) => unit !== '').map(({ symbol, unit }) => `${symbol}\u00a0in\u00a0${unit}`);
+  return named.length === 0 ? '' : `${named.join(', ')}.`;
 }
 
 function formulaCell({ formula, working }: { formula: string; working: string }): Piece[] {

@@ -1,4 +1,4 @@
-import type { MarginMap, NetworkLevel, Outcome } from '#libs/engine/index.js';
+import type { NetworkLevel, Outcome } from '#libs/engine/index.js';
 import { dutyName } from '#libs/present/figure-words.js';
 import { countWord } from '#libs/present/findings.js';
 import { formatApart, formatNumber, formatQuantity, GAP } from '#libs/present/format-number.js';
@@ -98,9 +98,9 @@ function drawMargins(paper: Paper, outcome: Outcome): void {
     paper.paragraph(['No order with a limit is present, so there is no map of margins.'], { style: NOTE });
     return;
   }
-  const maps: Numbered[] = [{ number: '9.3', chart: marginMap(thinned(margins), bankName(bank.groups)) }];
+  const maps: Numbered[] = [{ number: '9.3', chart: marginMap(margins, bankName(bank.groups), MOST_LEVELS) }];
   if (rival !== null)
-    maps.push({ number: '9.4', chart: marginMap(thinned(rival.margins), bankName(rival.bank.groups)) });
+    maps.push({ number: '9.4', chart: marginMap(rival.margins, bankName(rival.bank.groups), MOST_LEVELS) });
   const wide = margins.ordersH.length > 9;
   const spans = rival === null || wide ? [{ x: paper.left, width: paper.width }] : halves(paper);
   if (wide) for (const map of maps) drawMaps(paper, [map], spans);
@@ -134,19 +134,6 @@ function drawMaps(paper: Paper, maps: readonly Numbered[], spans: readonly Span[
     from = to;
     if (from < total) paper.turn();
   }
-}
-
-/** The lowest and highest level and, between them, those nearest a limit. */
-function thinned(margins: MarginMap): MarginMap {
-  const { levelsKvar, ordersH, sharePct } = margins;
-  if (levelsKvar.length <= MOST_LEVELS) return margins;
-  const last = levelsKvar.length - 1;
-  const byShare = levelsKvar
-    .map((_, at) => at)
-    .slice(1, -1)
-    .sort((a, b) => Math.max(...sharePct[b]!) - Math.max(...sharePct[a]!));
-  const kept = [0, last, ...byShare.slice(0, MOST_LEVELS - 2)].sort((a, b) => a - b);
-  return { ordersH, levelsKvar: kept.map((at) => levelsKvar[at]!), sharePct: kept.map((at) => sharePct[at]!) };
 }
 
 const DUTY_COLUMNS: Column[] = [

@@ -69,6 +69,14 @@ for (const { name, available, create } of databases) {
       expect(await row(first!.id)).toMatchObject({ state: 'done', progress: 1, revision: 1 });
     });
 
+    it('would be written to by a worker that was given up, if its attempt were not asked', async () => {
+      await submit('x');
+      const first = await claim(NOW_S);
+      const second = await claim(NOW_S + LEASE_S + 1);
+      const careless = { ...first!, attempt: second!.attempt };
+      expect(await store.write((manager) => finishJob(manager, careless, DONE))).toBe(true);
+    });
+
     it('that beat are left to their worker', async () => {
       await submit('x');
       const taken = await claim(NOW_S);

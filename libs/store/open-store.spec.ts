@@ -8,7 +8,7 @@ import { databases, type TestDatabase } from '../../test/support/databases.js';
 import { type Change, dataSourceFor, readAddress } from './data-source.js';
 import { openConnections, openStore } from './open-store.js';
 import { insertSite } from './sites.js';
-import { refuseUnsafeSqlite } from './sqlite-checks.js';
+import { checkSqliteConnection, refuseUnsafeSqlite } from './sqlite-checks.js';
 import { Store } from './store.js';
 import { StoredSite } from './stored-site.js';
 
@@ -113,6 +113,32 @@ describe('what the store stands on', () => {
       expect(() => readAddress(url)).not.toThrow(/secret/);
     },
   );
+
+  it.each([
+    ['synchronous = NORMAL', /synchronous = 1, expected 2/],
+    ['foreign_keys = OFF', /foreign_keys = 0, expected 1/],
+    ['busy_timeout = 0', /busy_timeout = 0, expected 5000/],
+    ['journal_mode = DELETE', /journal_mode = delete, expected wal/],
+  ])('is read back: %s would be noticed', async (pragma, reason) => {
+    const source = await dataSourceFor(readAddress(await fresh(databases[0]!.create))).initialize();
+    await checkSqliteConnection(source);
+    await source.query(`PRAGMA ${pragma}`);
+    await expect(checkSqliteConnection(source)).rejects.toThrow(reason);
+    await source.destroy();
+  });
+
+  it('is a transaction that takes the right to write at its beginning', async () => {
+    const address = readAddress(await fresh(databases[0]!.create));
+    const store = new Store(await openConnections(address));
+    const other = await dataSourceFor(address).initialize();
+    await other.query('PRAGMA busy_timeout = 0');
+    await store.write(async () => {
+      await expect(other.query(`INSERT INTO milestone VALUES ('x', '2026-01-31')`)).rejects.toThrow(/locked/);
+    });
+    await other.query(`INSERT INTO milestone VALUES ('x', '2026-01-31')`);
+    await other.destroy();
+    await store.close();
+  });
 
   it('cannot write over the connection that reads', async () => {
     const { reader, writer } = await openConnections(readAddress(await fresh(databases[0]!.create)));

@@ -1,11 +1,13 @@
 import { createLoadRecord, type LoadRecord, type RecordSummary, remark } from '#libs/engine/index.js';
 import { afterEach, beforeEach, describe, expect, it } from 'vitest';
 import { databases, type TestDatabase } from '../../test/support/databases.js';
-import { openStore } from './open-store.js';
+import { readAddress } from './data-source.js';
+import { openConnections, openStore } from './open-store.js';
+import { packRecord } from './pack-record.js';
 import { RecordColumn } from './record-column.js';
 import { insertRecord, type RecordFacts, readRecord } from './records.js';
 import { insertSite } from './sites.js';
-import type { Store } from './store.js';
+import { Store } from './store.js';
 import { StoredRecord } from './stored-record.js';
 import { StoredSite } from './stored-site.js';
 
@@ -83,6 +85,16 @@ for (const { name, available, create } of databases) {
       await expect(failing).rejects.toThrow('the disk is full');
       expect(await store.read((manager) => manager.count(StoredRecord))).toBe(0);
       expect(await store.read((manager) => manager.count(RecordColumn))).toBe(0);
+    });
+
+    it('leaves rows behind without its transaction, which shows that the test above can fail', async () => {
+      const { writer, reader } = await openConnections(readAddress(database.url));
+      const months = packRecord(awkwardRecord());
+      const broken = { ...months[20]!, month: months[0]!.month, quantity: months[0]!.quantity };
+      const columns = [...months.slice(0, 20), broken];
+      await expect(insertRecord(writer.manager, FACTS, awkwardRecord(), columns)).rejects.toThrow();
+      expect(await store.read((manager) => manager.count(RecordColumn))).toBe(20);
+      await new Store({ writer, reader, queue: null }).close();
     });
 
     it('goes with its site', async () => {

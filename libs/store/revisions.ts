@@ -3,6 +3,19 @@ import { ProposalFile } from './proposal-file.js';
 import { Revision } from './revision.js';
 import { StoredSite } from './stored-site.js';
 
+/** What a list of sites shows of each one's latest revision. */
+export type RevisionMark = Pick<Revision, 'siteId' | 'revision' | 'kind' | 'verdict' | 'createdAt'>;
+
+/** The latest revision of every site that has one. */
+export async function latestRevisions(manager: EntityManager): Promise<RevisionMark[]> {
+  const rows = await manager
+    .createQueryBuilder(Revision, 'revision')
+    .innerJoin(StoredSite, 'site', 'site.id = revision.siteId AND site.lastRevision = revision.revision')
+    .select(['siteId', 'revision', 'kind', 'verdict', 'createdAt', 'id'].map((name) => `revision.${name}`))
+    .getMany();
+  return rows.map(({ siteId, revision, kind, verdict, createdAt }) => ({ siteId, revision, kind, verdict, createdAt }));
+}
+
 /** A revision that has not got its number yet, and the proposal made for that number. */
 export interface NewRevision {
   revision: Revision;

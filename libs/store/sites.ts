@@ -18,6 +18,7 @@ export async function insertSite(
   site: Pick<StoredSite, 'id' | 'name' | 'document'>,
   now: Date,
 ): Promise<StoredSite> {
+  await waitForNumber(manager);
   const { last } = (await manager
     .createQueryBuilder(StoredSite, 'site')
     .select('MAX(site.number)', 'last')
@@ -32,6 +33,15 @@ export async function insertSite(
   };
   await manager.insert(StoredSite, row);
   return row;
+}
+
+/** Any number of this program's own, other than the lock of the migrations. */
+const NUMBER_LOCK = 7_183_502;
+
+/** On SQLite writes take turns anyway; on PostgreSQL two new sites would see the same last number. */
+async function waitForNumber(manager: EntityManager): Promise<void> {
+  if (manager.dataSource.options.type !== 'postgres') return;
+  await manager.query('SELECT pg_advisory_xact_lock($1)', [NUMBER_LOCK]);
 }
 
 /**

@@ -37,6 +37,21 @@ for (const { name, available, create } of databases) {
       expect(sites.at(-1)).toMatchObject({ name: 'B', latest: null });
     });
 
+    it('asked for by fifty at once all stand, each under a number of its own; the refused ones do not', async () => {
+      const before = (await server.ask('GET', '/api/sites')).body.sites.length;
+      const asked = await Promise.all(
+        Array.from({ length: 50 }, (_, i) =>
+          server.ask('POST', '/api/sites', siteFile(i % 2 === 0 ? { name: `Site ${i}` } : { rules: 'none' })),
+        ),
+      );
+      const taken = asked.filter(({ status }) => status === 201).map(({ body }) => body.id as string);
+      expect(asked.map(({ status }) => status).sort()).toEqual([...Array(25).fill(201), ...Array(25).fill(422)]);
+      const { sites } = (await server.ask('GET', '/api/sites')).body as { sites: { id: string; number: number }[] };
+      expect(sites).toHaveLength(before + 25);
+      expect(sites.map(({ id }) => id)).toEqual(expect.arrayContaining(taken));
+      expect(new Set(sites.map(({ number }) => number)).size).toBe(sites.length);
+    });
+
     it('are replaced by whoever saw the present version, and by nobody else', async () => {
       const { id } = await create1();
       const put = (tag: string | undefined, to: string) =>

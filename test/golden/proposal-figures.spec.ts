@@ -35,12 +35,9 @@ function wrongOnPaper(
   });
 }
 
-/** The figures of the method sheet: label, source, formula, working, value, in the order they are drawn. */
+/** The figures of the method sheet: formula, working, value, in the order they are drawn. */
 function methodSheet(outcome: Outcome): [string, number][] {
-  return outcome.result.figures.map(({ label, source, formula, working, value }) => [
-    `${label}${source}${formula}=${working}`,
-    value,
-  ]);
+  return outcome.result.figures.map(({ formula, working, value }) => [`${formula}=${working}`, value]);
 }
 
 function decidingFigures({ result }: Outcome): [string, number][] {
@@ -107,6 +104,7 @@ describe('a proposal read back', () => {
       const text = squeezed(raw);
       expect(wrongOnPaper(text, methodSheet(outcome))).toEqual([]);
       expect(wrongOnPaper(text, decidingFigures(outcome))).toEqual([]);
+      for (const { label, source } of outcome.result.figures) expect(text).toContain(squeezed(`${label}${source}`));
       const duties = text.indexOf(squeezed('Duties, worst level and corner'));
       expect(wrongOnPaper(text, dutyRows(outcome), Math.max(duties, 0))).toEqual([]);
       expect(raw).not.toContain('\ufffd');

@@ -1,17 +1,18 @@
 import { describe, expect, it } from 'vitest';
-import type { Outcome } from '#libs/engine/index.js';
+import { type Outcome, scanSite } from '#libs/engine/index.js';
 import type { Chart } from '#libs/present/chart.js';
 import { durationCurve } from '#libs/present/duration-curve.js';
 import { findings } from '#libs/present/findings.js';
+import { formatNumber } from '#libs/present/format-number.js';
 import { impedanceOverOrder } from '#libs/present/impedance-over-order.js';
 import { marginMap } from '#libs/present/margin-map.js';
 import { phasors } from '#libs/present/phasors.js';
 import { powerFactorByMonth } from '#libs/present/power-factor-by-month.js';
 import { singleLine } from '#libs/present/single-line.js';
-import { recordReport, resultReport } from '#libs/present/terminal-report.js';
+import { recordReport, resultReport, scanReport } from '#libs/present/terminal-report.js';
 import { worstDay } from '#libs/present/worst-day.js';
 import { generatedCase } from '../support/generated-site.js';
-import { MADE_BANK, MADE_PLAIN_BANK, madeOutcome } from '../support/outcome.js';
+import { MADE_BANK, MADE_PLAIN_BANK, madeOutcome, madeSite } from '../support/outcome.js';
 import { runs } from '../support/soak.js';
 
 const detuned = madeOutcome({ bank: MADE_BANK }, { days: 60 });
@@ -208,5 +209,18 @@ describe('the report for a terminal', () => {
 
   it('reports a record by itself', () => {
     expect(recordReport(detuned.result.record)).toContain('5\u00a0760 of 15\u00a0min, 0 missing');
+  });
+});
+
+describe('the report of a scan', () => {
+  it('has a row a corner, the nominal case first, and each corner’s peak', () => {
+    const site = madeSite({ bank: MADE_BANK });
+    const { levels } = scanSite(site, { ordersH: Float64Array.from([1, 5, 7]) });
+    const lines = scanReport(levels).trimEnd().split('\n');
+    expect(lines).toHaveLength(2 + levels.length);
+    expect(lines[0]).toContain('261\u00a0kvar');
+    expect(lines[2]).toContain('250\u00a0MVA');
+    expect(lines[2]).toContain(formatNumber(levels[0]!.parallelOrderH!));
+    expect(new Set(lines.slice(1).map((line) => line.length)).size).toBe(1);
   });
 });

@@ -67,6 +67,7 @@ export function generatedCase(number: number): { parts: Partial<Site>; load: Mad
     meanKw,
     powerFactor: random.between(0.62, 0.97),
     missingShare: random.oneOf([0, 0, 0.03]),
+    solarKw: number % 6 === 4 ? 2 * meanKw : 0,
     seed: number + 1,
   };
   return { parts: madeSite(parts), load };

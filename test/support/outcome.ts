@@ -20,6 +20,8 @@ export interface MadeLoad {
   /** mean over the working day [kW] */
   meanKw?: number;
   powerFactor?: number;
+  /** of its own generation at noon, exported where the load is less [kW] */
+  solarKw?: number;
   /** share of the slots left out, 0 … 1 */
   missingShare?: number;
   seed?: number;
@@ -40,7 +42,15 @@ export function seeded(seed: number): () => number {
 
 /** A record with working days, nights and week-ends, invented throughout. */
 export function madeRecord(load: MadeLoad = {}): LoadRecord {
-  const { days = 365, intervalS = 900, meanKw = 240, powerFactor = 0.74, missingShare = 0, seed = 1 } = load;
+  const {
+    days = 365,
+    intervalS = 900,
+    meanKw = 240,
+    powerFactor = 0.74,
+    missingShare = 0,
+    seed = 1,
+    solarKw = 0,
+  } = load;
   const random = seeded(seed);
   const beginS: number[] = [];
   const activeKw: number[] = [];
@@ -56,7 +66,8 @@ export function madeRecord(load: MadeLoad = {}): LoadRecord {
     const level = (working ? 1 - 0.3 * Math.cos((2 * Math.PI * hour) / 8) : 0.15) * (0.85 + 0.3 * noise);
     const season = 1 + 0.15 * Math.cos((2 * Math.PI * day) / 365);
     beginS.push(BEGIN_S + slot * intervalS);
-    activeKw.push(Math.round(meanKw * level * season * 10) / 10);
+    const solar = solarKw * Math.max(0, Math.sin((Math.PI * (hour - 6)) / 12));
+    activeKw.push(Math.round((meanKw * level * season - solar) * 10) / 10);
     reactiveKvar.push(Math.round(meanKw * level * season * tan * (0.9 + 0.2 * random()) * 10) / 10);
   }
   return createLoadRecord({

@@ -1,5 +1,5 @@
-import { Controller, Delete, Get, Headers, HttpCode, Inject, Param, Post, Req, Res } from '@nestjs/common';
-import type { FastifyReply, FastifyRequest } from 'fastify';
+import { Controller, Delete, Get, Headers, HttpCode, Inject, Param, Post, Res } from '@nestjs/common';
+import type { FastifyReply } from 'fastify';
 import { Readable } from 'node:stream';
 import type { Jobs } from '#libs/jobs/jobs.js';
 import type { Job } from '#libs/store/job.js';
@@ -37,7 +37,6 @@ export class JobsController {
   async events(
     @Param('jobId') jobId: string,
     @Headers('last-event-id') lastSeen: string | undefined,
-    @Req() request: FastifyRequest,
     @Res() reply: FastifyReply,
   ) {
     const id = pathNumber(jobId, 'job');
@@ -46,7 +45,6 @@ export class JobsController {
     // A client that has seen the end asks again on its own; 204 tells it to stop.
     if (now.finishedAt !== null && now.step <= seen) return reply.status(204).send();
     const gone = new AbortController();
-    request.raw.on('close', () => gone.abort());
     reply.raw.on('close', () => gone.abort());
     return reply
       .type('text/event-stream')

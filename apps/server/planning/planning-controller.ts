@@ -87,7 +87,7 @@ export class PlanningController {
   ) {
     const site = await findSite(this.store, siteId);
     const asked = await this.planning.ask(kind, site, body);
-    if ('contentHash' in asked) return this.#send(asked, reply);
+    if ('contentHash' in asked) return this.#send(asked, reply.status(200));
     const job = waitS === 0 ? asked : await this.jobs.result(asked.id, waitS);
     if (job.state === 'done') {
       reply.status(201).header('location', showJob(job).links.revision ?? '');

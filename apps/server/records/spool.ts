@@ -2,6 +2,7 @@ import type { FastifyRequest } from 'fastify';
 import { createHash, randomUUID } from 'node:crypto';
 import { createWriteStream } from 'node:fs';
 import { mkdir, rm } from 'node:fs/promises';
+import type { IncomingMessage } from 'node:http';
 import { join } from 'node:path';
 import { type Readable, Transform } from 'node:stream';
 import { pipeline } from 'node:stream/promises';
@@ -50,9 +51,14 @@ export class Spool {
    * @returns the file and the other fields; call `discard` when done with it
    */
   async receive(request: FastifyRequest): Promise<Upload> {
-    if (request.isMultipart()) return this.#receiveForm(request);
-    const name = fileNameOf((request.query as Record<string, unknown>).name);
-    return { file: await this.take(request.body as Readable, name), fields: {} };
+    try {
+      if (request.isMultipart()) return await this.#receiveForm(request);
+      const name = fileNameOf((request.query as Record<string, unknown>).name);
+      return { file: await this.take(request.body as Readable, name), fields: {} };
+    } catch (error) {
+      await passOver(request.raw, this.#mostBytes);
+      throw error;
+    }
   }
 
   /** Takes a stream to disk. */
@@ -61,10 +67,18 @@ export class Spool {
     const hash = createHash('sha256');
     const counter = new ByteCounter(this.#mostBytes, (chunk) => hash.update(chunk));
     try {
-      await pipeline(source, counter, createWriteStream(path, { flags: 'wx', mode: 0o600 }));
+      // Not part of the pipeline, which would destroy the request and with it the way to say why.
+      source.pipe(counter);
+      source.once('error', () => counter.destroy(brokenOff()));
+      source.once('close', () => {
+        if (!source.readableEnded) counter.destroy(brokenOff());
+      });
+      await pipeline(counter, createWriteStream(path, { flags: 'wx', mode: 0o600 }));
       // The form's own reader cuts a file off at its cap without an error.
       if ('truncated' in source && source.truncated) throw tooLarge(this.#mostBytes);
     } catch (error) {
+      source.unpipe(counter);
+      source.resume();
       await rm(path, { force: true });
       throw error;
     }
@@ -94,6 +108,23 @@ export class Spool {
       throw error;
     }
   }
+}
+
+/**
+ * Lets the rest of a refused body pass, so that the sender gets to read why and the connection stays usable; a body that
+ * does not end soon is cut off.
+ */
+async function passOver(body: IncomingMessage, mostBytes: number): Promise<void> {
+  if (body.complete || body.destroyed) return;
+  let bytes = 0;
+  const patience = setTimeout(() => body.destroy(), RATE_CHECK_MS);
+  const ended = new Promise((resolve) => body.once('end', resolve).once('close', resolve));
+  body.on('data', (chunk: Buffer) => {
+    bytes += chunk.length;
+    if (bytes > mostBytes) body.destroy();
+  });
+  await ended;
+  clearTimeout(patience);
 }
 
 /** Counts what passes; ends a stream that is too long or that hardly moves. */
@@ -135,6 +166,11 @@ class ByteCounter extends Transform {
 function tooLarge(most: number): InputProblem {
   const found = 'more';
   return new InputProblem([{ code: 'too-large', path: 'file', expected: `at most ${most} bytes`, found }]);
+}
+
+function brokenOff(): RefusedRequest {
+  const problem = { code: 'stopped', path: 'file', expected: 'a file to its end', found: 'an end before' } as const;
+  return new RefusedRequest(400, 'The upload was broken off', problem);
 }
 
 function tooSlow(): RefusedRequest {

@@ -3,7 +3,7 @@ import type { FastifyReply } from 'fastify';
 import { randomUUID } from 'node:crypto';
 import { readSiteWithMathjs } from '#libs/contract/read-site-with-mathjs.js';
 import { siteSchema } from '#libs/contract/site-schema.js';
-import { Revision } from '#libs/store/revision.js';
+import { latestRevisions } from '#libs/store/revisions.js';
 import { deleteSite, insertSite, replaceSite } from '#libs/store/sites.js';
 import { Store } from '#libs/store/store.js';
 import { StoredSite } from '#libs/store/stored-site.js';
@@ -20,18 +20,9 @@ export class SitesController {
   @Public('Lists the sites, each with its latest revision.')
   async list() {
     const sites = await this.store.read((manager) => manager.find(StoredSite, { order: { number: 'ASC' } }));
-    const latest = await this.store.read((manager) =>
-      manager.find(Revision, {
-        where: sites.map(({ id, lastRevision }) => ({ siteId: id, revision: lastRevision })),
-        select: { siteId: true, revision: true, kind: true, verdict: true, createdAt: true },
-      }),
-    );
-    return {
-      sites: sites.map((site) => {
-        const { siteId: _, ...revision } = latest.find(({ siteId }) => siteId === site.id) ?? { siteId: null };
-        return { ...headOf(site), latest: 'revision' in revision ? revision : null };
-      }),
-    };
+    const revisions = await this.store.read(latestRevisions);
+    const latest = new Map(revisions.map(({ siteId, ...revision }) => [siteId, revision]));
+    return { sites: sites.map((site) => ({ ...headOf(site), latest: latest.get(site.id) ?? null })) };
   }
 
   @Post()

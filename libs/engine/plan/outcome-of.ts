@@ -20,6 +20,8 @@ const RIVAL_REACTOR_PCT = 7;
 export interface Said {
   reasons: Remark[];
   assumptions: Remark[];
+  /** no better than this, whatever its figures say; `clear` where absent */
+  atBest?: Verdict;
 }
 
 /**
@@ -56,7 +58,7 @@ export function outcomeOf(
     conductorMinA,
     robustness: null,
     money: null,
-    verdict: overallVerdict(study, judgement),
+    verdict: graver(overallVerdict(study, judgement), said.atBest ?? 'clear'),
     reasons: [...said.reasons, ...reasons(study, bank, operated, judgement)],
     assumptions: [...study.assumptions, ...said.assumptions],
     cautions: cautions(judgement),

@@ -105,8 +105,7 @@ export function operate(study: Study, bank: Bank, control: Control): Operated {
   }
   const view = { ...record, wantedKvar, voltageScale: study.voltageScale };
   const run = simulate(switchedBank(bank, study.site.nominalV), control, view);
-  const scale = study.voltageScale;
-  const deliveredKvar = scale === null ? run.connectedKvar : run.connectedKvar.map((kvar, i) => kvar * scale[i]!);
+  const deliveredKvar = atVoltage(run.connectedKvar, study.voltageScale);
   const meter = meterAfter(record, load, deliveredKvar);
   return {
     beginS: record.beginS,
@@ -121,11 +120,16 @@ export function operate(study: Study, bank: Bank, control: Control): Operated {
 }
 
 /**
- * Meter columns with a constant kvar connected throughout; a bound on what any bank of that size can do.
+ * Meter columns with the same stages connected throughout; a bound on what any bank of that size can do.
  * @param study site and record
- * @param kvar connected at the bus [kvar]
+ * @param kvar effective kvar connected at the bus, at nominal voltage; each interval's voltage scales it [kvar]
  * @returns columns at the meter
  */
 export function meterWithConstant(study: Study, kvar: number): MeterAfter {
-  return meterAfter(study.record, study.load, new Float64Array(study.record.beginS.length).fill(kvar));
+  const connectedKvar = new Float64Array(study.record.beginS.length).fill(kvar);
+  return meterAfter(study.record, study.load, atVoltage(connectedKvar, study.voltageScale));
+}
+
+function atVoltage(connectedKvar: Float64Array, voltageScale: Float64Array | null): Float64Array {
+  return voltageScale === null ? connectedKvar : connectedKvar.map((kvar, i) => kvar * voltageScale[i]!);
 }

@@ -38,9 +38,11 @@ interface Candidate {
 }
 
 const DELIMITERS = [';', '\t', '|', ','] as const;
-/** Rows of the buffer that are looked at for a header. */
-const LOOK_ROWS = 400;
+/** Rows of the buffer that are looked at for a header, at first and where that does not show one. */
+const LOOKS = [40, 400];
 const SAMPLE_ROWS = 24;
+/** Added to the score of a header with a dated row behind it, and again where that row is as wide. */
+const FOLLOWED = 500;
 
 /**
  * Finds the header row and what its columns mean.
@@ -54,9 +56,13 @@ export function findLayout(
   map: MeterMap,
 ): CsvLayout | null {
   const separators = map.separator === undefined ? DELIMITERS : [map.separator];
-  const candidates = separators.flatMap((separator) => candidatesAt(rowsOf(view, separator), separator, map));
-  const best = candidates.reduce<Candidate | null>((a, b) => (a === null || b.score > a.score ? b : a), null);
-  return best === null ? null : layoutOf(best, map);
+  // the header of most files stands near their beginning
+  for (const look of LOOKS) {
+    const candidates = separators.flatMap((separator) => candidatesAt(rowsOf(view, separator, look), separator, map));
+    const best = candidates.reduce<Candidate | null>((a, b) => (a === null || b.score > a.score ? b : a), null);
+    if (best !== null && (best.score >= FOLLOWED || look === LOOKS.at(-1))) return layoutOf(best, map);
+  }
+  return null;
 }
 
 /**
@@ -71,21 +77,22 @@ export function looksTabular(view: {
   rowsBefore: number;
 }) {
   return DELIMITERS.some((separator) =>
-    rowsOf(view, separator)
-      .slice(0, SAMPLE_ROWS)
-      .some(({ cells }) => cells.length > 1 && cells.some((cell) => isDated(cell) !== null) && cells.some(isNumber)),
+    rowsOf(view, separator, SAMPLE_ROWS).some(
+      ({ cells }) => cells.length > 1 && cells.some((cell) => isDated(cell) !== null) && cells.some(isNumber),
+    ),
   );
 }
 
 function rowsOf(
   view: { bytes: Uint8Array; start: number; end: number; rowEnd: number; rowsBefore: number },
   separator: string,
+  most: number,
 ): Row[] {
   const cells = new RowCells();
   const marks = { delimiter: separator.charCodeAt(0), rowEnd: view.rowEnd };
   const rows: Row[] = [];
   let at = view.start;
-  while (rows.length < LOOK_ROWS && at < view.end) {
+  while (rows.length < most && at < view.end) {
     at = cells.split(view.bytes, at, view.end, marks);
     if (at < 0) break;
     rows.push({ cells: cells.texts(), number: view.rowsBefore + rows.length + 1 });
@@ -96,10 +103,13 @@ function rowsOf(
 function candidatesAt(rows: Row[], separator: string, map: MeterMap): Candidate[] {
   const delimiter = separator.charCodeAt(0);
   if (map.headerRow === 0) return headless(rows, delimiter);
-  return rows.flatMap((row, index) => {
-    if (map.headerRow !== undefined ? row.number !== map.headerRow : !mayName(row)) return [];
-    return candidateAt(rows, index, delimiter, map);
-  });
+  const found: Candidate[] = [];
+  for (const [index, row] of rows.entries()) {
+    if (map.headerRow === undefined ? !mayName(row) : row.number !== map.headerRow) continue;
+    found.push(...candidateAt(rows, index, delimiter, map));
+    if ((found.at(-1)?.score ?? 0) >= 2 * FOLLOWED) break;
+  }
+  return found;
 }
 
 function headless(rows: Row[], delimiter: number): Candidate[] {
@@ -139,7 +149,8 @@ function candidateAt(rows: Row[], index: number, delimiter: number, map: MeterMa
   const said = map.headerRow !== undefined || map.columns !== undefined;
   if (!said && (roles.length < 2 || roles.every(({ role }) => role === 'time'))) return [];
   const followed = data[0]?.cells.some((cell) => timeContent([cell]) !== null && isDated(cell) !== null) === true;
-  const score = roles.length + (followed && data[0]!.cells.length === header.length ? 1000 : followed ? 500 : 0);
+  const score =
+    roles.length + (followed ? FOLLOWED : 0) + (followed && data[0]!.cells.length === header.length ? FOLLOWED : 0);
   return [{ delimiter, row, lastHeaderRow, header, data: data.slice(0, SAMPLE_ROWS), score }];
 }
 

@@ -4,7 +4,7 @@ import type { MeterBytes } from '../meter-bytes.js';
 /** A row longer than this is no row of a meter file [bytes]. */
 export const LONGEST_ROW_BYTES = 1_048_576;
 
-const FIRST_BYTES = 524_288;
+const FIRST_BYTES = 98_304;
 
 /**
  * The part of a file that is being read: `bytes` from `start` to `end`. Reused from chunk to chunk; what has been read is
