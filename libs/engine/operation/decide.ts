@@ -1,3 +1,4 @@
+import { firstAtLeast, type LevelTable } from './level-table.js';
 import type { SwitchedBank } from './switched-bank.js';
 
 /** Comparisons of candidates carry this share of the smallest stage; the two response thresholds are exact. */
@@ -19,6 +20,11 @@ export interface Decision {
   bandKvar: number;
   /** receives the count per class to go to */
   chosen: Int32Array;
+  /** the bank's count vectors by level */
+  table: LevelTable;
+  /** the vector taken so far, −1 for none */
+  nearest: number;
+  nearestSwitchings: number;
 }
 
 /**
@@ -59,51 +65,54 @@ function nearestOfOneSizeInto(bank: SwitchedBank, decision: Decision): void {
   decision.chosen[0] = best;
 }
 
+// Vectors are looked at from what is wanted outwards: the first reachable one sets the least distance, and only those
+// as near as it are compared further. Present counts are always reachable, so one is found.
 function nearestOfManyInto(bank: SwitchedBank, decision: Decision): void {
+  const { voltageScale, wantedKvar, table } = decision;
+  const { levelKvar, counts } = table;
   const tolerance = COMPARISON_SHARE * bank.smallestKvar;
-  const counts = new Int32Array(bank.classes.length);
-  let leastOff = Number.POSITIVE_INFINITY;
-  eachReachable(bank, decision, counts, (levelKvar) => {
-    const off = Math.abs(decision.wantedKvar - levelKvar);
-    if (off < leastOff) leastOff = off;
-  });
-  let leastSwitchings = Number.POSITIVE_INFINITY;
-  let lowestKvar = Number.POSITIVE_INFINITY;
-  eachReachable(bank, decision, counts, (levelKvar, switchings) => {
-    if (Math.abs(decision.wantedKvar - levelKvar) > leastOff + tolerance) return;
-    const fewer = switchings < leastSwitchings;
-    const lower = switchings === leastSwitchings && levelKvar < lowestKvar - tolerance;
-    // Counts are walked in ascending lexicographic order: a later equal never replaces an earlier one.
-    if (!fewer && !lower) return;
-    leastSwitchings = switchings;
-    lowestKvar = levelKvar;
-    decision.chosen.set(counts);
-  });
+  let above = firstAtLeast(table, wantedKvar / voltageScale);
+  let below = above - 1;
+  let mostOff = Number.POSITIVE_INFINITY;
+  decision.nearest = -1;
+  while (above < levelKvar.length || below >= 0) {
+    const offAbove =
+      above < levelKvar.length ? Math.abs(levelKvar[above]! * voltageScale - wantedKvar) : Number.POSITIVE_INFINITY;
+    const offBelow = below >= 0 ? Math.abs(wantedKvar - levelKvar[below]! * voltageScale) : Number.POSITIVE_INFINITY;
+    const off = Math.min(offAbove, offBelow);
+    if (off > mostOff) break;
+    const vector = offBelow <= offAbove ? below-- : above++;
+    if (takeNearer(decision, vector, tolerance)) mostOff = Math.min(mostOff, off + tolerance);
+  }
+  const classes = bank.classes.length;
+  for (let c = 0; c < classes; c++) decision.chosen[c] = counts[decision.nearest * classes + c]!;
 }
 
-// Walks every reachable count vector in ascending lexicographic order, largest class first.
-function eachReachable(
-  bank: SwitchedBank,
-  decision: Decision,
-  counts: Int32Array,
-  visit: (levelKvar: number, switchings: number) => void,
-): void {
-  const walk = (c: number, levelKvar: number, switchings: number): void => {
-    if (c === bank.classes.length) {
-      visit(levelKvar, switchings);
-      return;
-    }
-    const present = decision.connected[c]!;
-    const kvar = bank.classes[c]!.kvar * decision.voltageScale;
-    const left = decision.mostSwitchings - switchings;
-    const low = Math.max(0, present - left);
-    const high = present + Math.min(decision.free[c]!, left);
-    for (let count = low; count <= high; count++) {
-      counts[c] = count;
-      walk(c + 1, levelKvar + count * kvar, switchings + Math.abs(count - present));
-    }
-  };
-  walk(0, bank.fixedKvar * decision.voltageScale, 0);
+// Of vectors equally near: fewest switchings, then the lower level, then the lexicographically smaller one.
+function takeNearer(decision: Decision, vector: number, tolerance: number): boolean {
+  const switchings = switchingsTo(decision, vector);
+  if (switchings < 0) return false;
+  const { nearest, nearestSwitchings, table, voltageScale } = decision;
+  const apartKvar = nearest < 0 ? 0 : (table.levelKvar[vector]! - table.levelKvar[nearest]!) * voltageScale;
+  const lower = apartKvar < -tolerance || (apartKvar <= tolerance && table.rank[vector]! < table.rank[nearest]!);
+  if (nearest < 0 || switchings < nearestSwitchings || (switchings === nearestSwitchings && lower)) {
+    decision.nearest = vector;
+    decision.nearestSwitchings = switchings;
+  }
+  return true;
+}
+
+// Switchings to a vector, −1 where it is out of reach.
+function switchingsTo(decision: Decision, vector: number): number {
+  const { connected, free, table, mostSwitchings } = decision;
+  const classes = connected.length;
+  let switchings = 0;
+  for (let c = 0; c < classes; c++) {
+    const change = table.counts[vector * classes + c]! - connected[c]!;
+    if (change > free[c]!) return -1;
+    switchings += Math.abs(change);
+  }
+  return switchings <= mostSwitchings ? switchings : -1;
 }
 
 /**

@@ -1,6 +1,10 @@
 import type { Control } from './control.js';
 import { type Decision, nearestLevelInto, oneByOneInto } from './decide.js';
+import { type LevelTable, levelTable } from './level-table.js';
 import type { SwitchedBank } from './switched-bank.js';
+
+/** Banks of one size and the controller that goes stage by stage need no table. */
+const NO_TABLE: LevelTable = { levelKvar: new Float64Array(0), counts: new Int32Array(0), rank: new Int32Array(0) };
 
 /** What the controller sees, one entry a valid interval, length n. */
 export interface ControllerView {
@@ -15,12 +19,14 @@ export interface ControllerView {
   standby: Uint8Array | null;
 }
 
-/** The year as switched; length n but for `switchings`. */
+/** The year as switched. */
 export interface SwitchingRun {
-  /** effective kvar connected, at nominal voltage [kvar] */
+  /** effective kvar connected, at nominal voltage, length n [kvar] */
   connectedKvar: Float64Array;
   /** one entry a physical stage */
   switchings: Int32Array;
+  /** valid intervals each physical stage was connected in */
+  connectedIntervals: Float64Array;
 }
 
 /**
@@ -34,36 +40,75 @@ export interface SwitchingRun {
  * @source method-controller
  */
 export function simulate(bank: SwitchedBank, control: Control, view: ControllerView): SwitchingRun {
-  const state = new SwitchState(bank, control, view.intervalS);
-  const connectedKvar = new Float64Array(view.beginS.length);
-  if (view.voltageScale === null && view.standby === null) runPlainInto(state, view, connectedKvar);
-  else runFullInto(state, view, connectedKvar);
-  return { connectedKvar, switchings: state.switchings };
+  const simulation = new Simulation(bank, control, view);
+  const n = view.beginS.length;
+  const connectedKvar = new Float64Array(n);
+  simulation.runInto(connectedKvar, n);
+  return { connectedKvar, switchings: simulation.switchings(), connectedIntervals: simulation.connectedIntervals() };
 }
 
-// The common interval is two compares: everything else is in the state's own functions.
-function runPlainInto(state: SwitchState, view: ControllerView, connectedKvar: Float64Array): void {
-  const { wantedKvar, beginS } = view;
-  const n = wantedKvar.length;
-  const band = state.bandKvar;
-  let level = state.levelKvar;
-  for (let i = 0; i < n; i++) {
-    const d = wantedKvar[i]! - level;
-    if (d > band || d < -band) level = state.decide(beginS[i]!, wantedKvar[i]!, 1);
-    connectedKvar[i] = level;
+/** A controller at work that can be stopped between two intervals and go on later. */
+export class Simulation {
+  readonly #state: SwitchState;
+  readonly #view: ControllerView;
+  #next = 0;
+
+  /**
+   * @param bank the controller's view of the bank
+   * @param control settings
+   * @param view what the controller sees, length n
+   */
+  constructor(bank: SwitchedBank, control: Control, view: ControllerView) {
+    this.#state = new SwitchState(bank, control, view.intervalS);
+    this.#view = view;
   }
-}
 
-function runFullInto(state: SwitchState, view: ControllerView, connectedKvar: Float64Array): void {
-  const { wantedKvar, beginS, voltageScale, standby } = view;
-  for (let i = 0; i < wantedKvar.length; i++) {
-    const scale = voltageScale === null ? 1 : voltageScale[i]!;
-    if (standby !== null && standby[i] === 1) state.holdOff(beginS[i]!);
-    else {
-      const d = wantedKvar[i]! - state.levelKvar * scale;
-      if (d > state.bandKvar || d < -state.bandKvar) state.decide(beginS[i]!, wantedKvar[i]!, scale);
+  /**
+   * Goes on to an interval.
+   * @param connectedKvar receives the connected kvar of the intervals passed, each at its own place, length n [kvar]
+   * @param end the interval to stop before
+   */
+  runInto(connectedKvar: Float64Array, end: number): void {
+    if (this.#view.voltageScale === null && this.#view.standby === null) this.#runPlainInto(connectedKvar, end);
+    else this.#runFullInto(connectedKvar, end);
+    this.#next = end;
+  }
+
+  // The common interval is two compares: everything else is in the state's own functions.
+  #runPlainInto(connectedKvar: Float64Array, end: number): void {
+    const state = this.#state;
+    const { wantedKvar, beginS } = this.#view;
+    const band = state.bandKvar;
+    let level = state.levelKvar;
+    for (let i = this.#next; i < end; i++) {
+      const d = wantedKvar[i]! - level;
+      if (d > band || d < -band) level = state.decide(i, beginS[i]!, wantedKvar[i]!, 1);
+      connectedKvar[i] = level;
     }
-    connectedKvar[i] = state.levelKvar;
+  }
+
+  #runFullInto(connectedKvar: Float64Array, end: number): void {
+    const state = this.#state;
+    const { wantedKvar, beginS, voltageScale, standby } = this.#view;
+    for (let i = this.#next; i < end; i++) {
+      const scale = voltageScale === null ? 1 : voltageScale[i]!;
+      if (standby !== null && standby[i] === 1) state.holdOff(i, beginS[i]!);
+      else {
+        const d = wantedKvar[i]! - state.levelKvar * scale;
+        if (d > state.bandKvar || d < -state.bandKvar) state.decide(i, beginS[i]!, wantedKvar[i]!, scale);
+      }
+      connectedKvar[i] = state.levelKvar;
+    }
+  }
+
+  /** @returns switchings so far, one entry a physical stage */
+  switchings(): Int32Array {
+    return this.#state.switchings.slice();
+  }
+
+  /** @returns valid intervals so far in which each physical stage was connected */
+  connectedIntervals(): Float64Array {
+    return this.#state.connectedIntervals(this.#next);
   }
 }
 
@@ -76,6 +121,9 @@ class SwitchState {
   readonly #control: Control;
   readonly #on: Uint8Array;
   readonly #offSinceS: Float64Array;
+  /** interval in which a stage was connected last */
+  readonly #onSince: Int32Array;
+  readonly #intervalsOn: Float64Array;
   readonly #decision: Decision;
 
   constructor(bank: SwitchedBank, control: Control, intervalS: number) {
@@ -86,6 +134,11 @@ class SwitchState {
     this.bandKvar = bank.classes.length === 0 ? Number.POSITIVE_INFINITY : control.responseRatio * bank.smallestKvar;
     this.#on = new Uint8Array(bank.stageCount);
     this.#offSinceS = new Float64Array(bank.stageCount).fill(Number.NEGATIVE_INFINITY);
+    this.#onSince = new Int32Array(bank.stageCount);
+    this.#intervalsOn = new Float64Array(bank.stageCount);
+    // what is in no size class is never switched, and always in
+    this.#on.fill(1);
+    for (const { stages } of bank.classes) for (const stage of stages) this.#on[stage] = 0;
     const perInterval = Math.floor(intervalS / control.stepDelayS);
     this.#decision = {
       connected: new Int32Array(bank.classes.length),
@@ -95,10 +148,14 @@ class SwitchState {
       voltageScale: 1,
       wantedKvar: 0,
       bandKvar: this.bandKvar,
+      table: bank.classes.length > 1 && control.mode === 'nearestLevel' ? levelTable(bank) : NO_TABLE,
+      nearest: -1,
+      nearestSwitchings: 0,
     };
   }
 
-  decide(beginS: number, wantedKvar: number, scale: number): number {
+  // four numbers, not an object: called for every interval that leaves the band
+  decide(interval: number, beginS: number, wantedKvar: number, scale: number): number {
     const decision = this.#decision;
     decision.wantedKvar = wantedKvar;
     decision.voltageScale = scale;
@@ -106,22 +163,28 @@ class SwitchState {
     if (this.#control.mode === 'nearestLevel') nearestLevelInto(this.#bank, decision);
     else oneByOneInto(this.#bank, decision);
     for (let c = 0; c < decision.chosen.length; c++) {
-      for (let k = decision.connected[c]!; k < decision.chosen[c]!; k++) this.#connectOne(c, beginS);
-      for (let k = decision.connected[c]!; k > decision.chosen[c]!; k--) this.#disconnectOne(c, beginS);
+      for (let k = decision.connected[c]!; k < decision.chosen[c]!; k++) this.#connectOne(c, interval, beginS);
+      for (let k = decision.connected[c]!; k > decision.chosen[c]!; k--) this.#disconnectOne(c, interval, beginS);
       decision.connected[c] = decision.chosen[c]!;
     }
     return this.#settleLevel();
   }
 
-  holdOff(beginS: number): void {
+  holdOff(interval: number, beginS: number): void {
     const { connected } = this.#decision;
     for (let c = 0; c < connected.length; c++) {
       while (connected[c]! > 0) {
-        this.#disconnectOne(c, beginS);
+        this.#disconnectOne(c, interval, beginS);
         connected[c]!--;
       }
     }
     this.#settleLevel();
+  }
+
+  connectedIntervals(end: number): Float64Array {
+    return this.#intervalsOn.map((intervals, stage) =>
+      this.#on[stage] === 1 ? intervals + end - this.#onSince[stage]! : intervals,
+    );
   }
 
   #settleLevel(): number {
@@ -144,7 +207,7 @@ class SwitchState {
     }
   }
 
-  #connectOne(c: number, beginS: number): void {
+  #connectOne(c: number, interval: number, beginS: number): void {
     const delayS = this.#control.reconnectDelayS;
     const even = this.#control.wear === 'even';
     const { stages } = this.#bank.classes[c]!;
@@ -156,10 +219,11 @@ class SwitchState {
     }
     if (pick < 0) throw new Error('no free stage to connect');
     this.#on[pick] = 1;
+    this.#onSince[pick] = interval;
     this.switchings[pick]!++;
   }
 
-  #disconnectOne(c: number, beginS: number): void {
+  #disconnectOne(c: number, interval: number, beginS: number): void {
     const even = this.#control.wear === 'even';
     const { stages } = this.#bank.classes[c]!;
     let pick = -1;
@@ -171,6 +235,7 @@ class SwitchState {
     if (pick < 0) throw new Error('no connected stage to disconnect');
     this.#on[pick] = 0;
     this.#offSinceS[pick] = beginS;
+    this.#intervalsOn[pick]! += interval - this.#onSince[pick]!;
     this.switchings[pick]!++;
   }
 }
