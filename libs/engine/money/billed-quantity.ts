@@ -1,4 +1,4 @@
-import type { MonthRun } from './clause-ground.js';
+import type { TariffMonth } from './tariff-calendar.js';
 import type { BilledQuantity } from './papers.js';
 import { put } from './working.js';
 
@@ -13,6 +13,16 @@ const WHOLE_UNITS: Record<
   down: { words: 'floor', of: (quantity) => Math.floor(quantity + WHOLE_WIDTH) },
   nearest: { words: 'round', of: (quantity) => Math.floor(quantity + 0.5 + WHOLE_WIDTH) },
 };
+
+/** A month, and what the months before it have left. */
+export interface CarriedRun {
+  /** index of the month */
+  m: number;
+  month: TariffMonth;
+  months: readonly TariffMonth[];
+  /** own quantities, one row a carried part, one entry a month */
+  carried: Float64Array;
+}
 
 /** How a formed quantity becomes the billed one: whole units, then the greatest of it, a minimum and a ratchet. */
 export class QuantityRule {
@@ -45,7 +55,7 @@ export class QuantityRule {
    * @param run the month
    * @param own greatest own quantity of its periods
    */
-  keep(run: MonthRun, own: number): void {
+  keep(run: CarriedRun, own: number): void {
     if (this.#row >= 0) run.carried[this.#row * run.months.length + run.m] = own;
   }
 
@@ -55,12 +65,12 @@ export class QuantityRule {
    * @returns same unit as the quantity; 0 without a ratchet
    * @source method-money
    */
-  ratchet(run: MonthRun): number {
+  ratchet(run: CarriedRun): number {
     const { ratchet } = this.#rule;
     return ratchet === undefined ? 0 : (ratchet.pct / 100) * this.#greatestBefore(run);
   }
 
-  #greatestBefore(run: MonthRun): number {
+  #greatestBefore(run: CarriedRun): number {
     const { ratchet } = this.#rule;
     if (ratchet === undefined) return 0;
     const at = this.#row * run.months.length;
@@ -90,7 +100,7 @@ export class QuantityRule {
    * @param run the month
    * @returns for example "max(ceil(565.2), 50, 80 / 100 · 700)"
    */
-  working(formed: string, run: MonthRun): string {
+  working(formed: string, run: CarriedRun): string {
     const { wholeUnits, minimum, ratchet } = this.#rule;
     const own = wholeUnits === undefined ? formed : `${WHOLE_UNITS[wholeUnits].words}(${formed})`;
     const others = [

@@ -55,7 +55,7 @@ export interface ReadyClause {
  * @param clause the clause
  * @returns its selection
  */
-export function selectionOf(ground: ClauseGround, clause: Clause): Selection {
+export function selectionOf(ground: Pick<ClauseGround, 'masks'>, clause: Clause): Selection {
   return ground.masks.selection({ union: clause.windows ?? null, within: null });
 }
 
@@ -89,7 +89,7 @@ export interface PricedPart {
  * @throws InputProblem where the priced windows don't share out the clause's intervals
  */
 export function pricedParts(
-  ground: ClauseGround,
+  ground: Pick<ClauseGround, 'masks'>,
   clause: Clause & { pricePerUnit?: number; prices?: Record<string, number> },
   path: string,
 ): PricedPart[] {

@@ -123,8 +123,14 @@ export class DemandReading {
   }
 }
 
-// No block reaches over the end of a period, so the period of any of its intervals is its own.
-function periodsOfBlocks(shape: DemandShape, periods: Grouping): Int32Array[] {
+/**
+ * The period of each demand block, month by month: no block reaches over the end of a period, so the period of any of
+ * its intervals is its own.
+ * @param shape intervals and blocks
+ * @param periods periods of the same intervals
+ * @returns one list a month
+ */
+export function periodsOfBlocks(shape: DemandShape, periods: Grouping): Int32Array[] {
   const { selection, blocks } = shape;
   return blocks.sizes.map((sizes, m) => {
     const periodOfBlock = new Int32Array(sizes.length).fill(-1);
