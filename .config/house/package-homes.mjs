@@ -25,7 +25,6 @@ const PACKAGE_HOMES = {
   fastify: ['apps/server'],
   rxjs: ['apps/server'],
   pino: ['apps/server', 'apps/cli'],
-  commander: ['apps/cli'],
 };
 
 /** What the page loads or the engine is made of runs in a browser too. */

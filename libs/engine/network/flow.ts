@@ -3,6 +3,7 @@ import type { Level } from '../layout/levels.js';
 import type { ComplexColumn } from './bus-admittance.js';
 import type { CornerCase } from './corners.js';
 import type { NetworkModel } from './network-model.js';
+import { LEAST_SIEMENS } from './scan-into.js';
 import { stageAdmittance, stageBranch } from './stage-admittance.js';
 import { combine } from './summation.js';
 
@@ -110,7 +111,7 @@ function flowInto(model: NetworkModel, stages: readonly ComplexColumn[], flow: F
     }
     const yRe = table.bus.re[i]! + bankRe;
     const yIm = table.bus.im[i]! + bankIm;
-    const zMagnitude = 1 / magnitude(yRe, yIm);
+    const zMagnitude = 1 / Math.max(LEAST_SIEMENS, magnitude(yRe, yIm));
     const sRe = table.source.re[i]!;
     const sIm = table.source.im[i]!;
     // E·(1 − Z/Z_s)/Z_s = (Z/Z_s)·(E/Z_s)·(Z_s·Y − 1): the share Z/Z_s stands before both currents of the source.

@@ -1,5 +1,8 @@
 import type { ComplexColumn } from './bus-admittance.js';
 
+/** A circuit without any loss has no admittance at its resonance; with this much in its place results stay numbers [S]. */
+export const LEAST_SIEMENS = 1e-12;
+
 /**
  * |Z(h)| at the bus for a bank of equal stages, many levels at once: Z = 1/(Y₀ + n·y), and since
  * |Y₀ + n·y|² = |Y₀|² + 2n·Re(Y₀·ȳ) + n²·|y|² the levels cost two multiply-adds a point.
@@ -44,7 +47,7 @@ function levelInto({ a, b, c }: Quadratic, count: number, out: Float64Array, off
 }
 
 /**
- * |Y(h)|² at the bus with a count of stages of each group connected: Y = Y₀ + Σ n_g·y_g.
+ * |Y(h)|² at the bus with a count of stages of each group connected: Y = Y₀ + Σ n_g·y_g, at least 1e-24 S².
  * @param bus Y₀ over orders [S], length m
  * @param stages y of one stage of each group over the same orders [S]
  * @param vector connected stages per group
@@ -65,6 +68,6 @@ export function admittanceSquareInto(
       g += vector[k]! * stages[k]!.re[i]!;
       b += vector[k]! * stages[k]!.im[i]!;
     }
-    out[i] = g * g + b * b;
+    out[i] = Math.max(LEAST_SIEMENS * LEAST_SIEMENS, g * g + b * b);
   }
 }

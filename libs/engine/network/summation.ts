@@ -1,5 +1,5 @@
 import type { Loads } from './loads.js';
-import { HIGHEST_ORDER_H, injectedOrders } from './spectra.js';
+import { HIGHEST_ORDER_H, injectedOrders, SPECTRA } from './spectra.js';
 
 /**
  * Summation exponent of an order: 1 below 5, 1.4 from 5 to 10, 2 above; 1 throughout for arithmetic summation.
@@ -68,4 +68,24 @@ export function excitation(loads: Loads, nominalV: number): Excitation {
     injectedA: ordersH.map((h) => injected.get(h) ?? 0),
     backgroundV: ordersH.map((h) => background.get(h) ?? 0),
   };
+}
+
+/**
+ * Neutral current of loads with zero-sequence triplens: per order the loads combined as everywhere, then three times the
+ * root sum of squares over the orders.
+ * @param loads settled loads; an unknown list counts as empty here
+ * @returns rms neutral current [A]
+ * @source derived: zero-sequence currents of the three phases add in the neutral; iec-tr-61000-3-6 between loads
+ */
+export function neutralA(loads: Pick<Loads, 'distorting' | 'summation'>): number {
+  const phaseA = new Map<number, number>();
+  for (const load of loads.distorting ?? []) {
+    if (load.orders !== undefined || load.spectrum !== 'single-phase-electronic') continue;
+    for (const { orderH, pct } of SPECTRA[load.spectrum].orders) {
+      if (orderH % 3 !== 0) continue;
+      const alpha = summationExponent(orderH, loads.summation);
+      phaseA.set(orderH, combine(phaseA.get(orderH) ?? 0, (load.fundamentalA * pct) / 100, alpha));
+    }
+  }
+  return 3 * Math.sqrt([...phaseA.values()].reduce((sum, a) => sum + a * a, 0));
 }

@@ -49,8 +49,9 @@ function nearestOfOneSizeInto(bank: SwitchedBank, decision: Decision): void {
   const high = present + Math.min(decision.free[0]!, decision.mostSwitchings);
   const tolerance = COMPARISON_SHARE * bank.smallestKvar;
   const below = Math.min(high, Math.max(low, Math.floor((decision.wantedKvar - fixed) / kvar)));
-  let best = below;
-  let bestOff = Math.abs(decision.wantedKvar - fixed - below * kvar);
+  // The present count first: on a dead bus every level is as far off, and nothing is switched.
+  let best = present;
+  let bestOff = Math.abs(decision.wantedKvar - fixed - present * kvar);
   for (let count = Math.max(low, below - 1); count <= Math.min(high, below + 2); count++) {
     const off = Math.abs(decision.wantedKvar - fixed - count * kvar);
     const fewer = Math.abs(count - present) < Math.abs(best - present);

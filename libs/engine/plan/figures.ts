@@ -1,5 +1,5 @@
 import type { Bank } from '../layout/bank.js';
-import { neutralA } from '../network/spectra.js';
+import { neutralA } from '../network/summation.js';
 import { supplyPath } from '../supply/supply-path.js';
 import { bankFigures } from './bank-figures.js';
 import { type Figure, figure } from './figure.js';
@@ -162,7 +162,7 @@ function operationFigures(study: Study, bank: Bank, operated: Operated, result: 
     );
   }
   if (bank.groups.length > 0) found.push(...transformerFigures(study, operated));
-  const neutral = neutralA(study.site.loads.distorting ?? []);
+  const neutral = neutralA(study.site.loads);
   if (neutral > 0) {
     found.push(
       figure(

@@ -8,6 +8,8 @@ const INTER_STAGE_UH = 2;
 const REACTOR_QUALITY = 30;
 /** A stated reactor ratio may differ from the nameplate's own by this share before it is a finding. */
 const RATIO_TOLERANCE = 0.03;
+/** p·1.10·1.03 stays below 1 in every corner. */
+const MOST_REACTOR_PCT = 88;
 
 /**
  * A bank as the site file gives it, defaults filled in; where nameplate µF and mH stand, p is derived from them.
@@ -57,12 +59,12 @@ interface GroupContext {
 function settleGroup(stage: StageGroupInput, g: number, context: GroupContext): StageGroup {
   const path = `bank.stages[${g}]`;
   const reactorPct = reactorRatioPct(stage, path, context);
-  if (!(reactorPct >= 0 && reactorPct < 100)) {
+  if (!(reactorPct >= 0 && reactorPct < MOST_REACTOR_PCT)) {
     throw new InputProblem([
       {
         code: 'out-of-range',
         path: `${path}.reactorPct`,
-        expected: '0 to below 100',
+        expected: `0 to below ${MOST_REACTOR_PCT}: at +10 % capacitance and +3 % inductance it must stay below 100`,
         found: `${reactorPct}`,
         unit: '%',
       },

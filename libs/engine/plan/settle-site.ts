@@ -129,7 +129,9 @@ function settleSupply(supply: SupplyInput, defaults: Defaults): Supply {
 
 function settleLoads(loads: LoadsInput | undefined, record: LoadRecord | null, defaults: Defaults): Loads {
   const meanKw = record === null ? 0 : Math.max(0, compensatedSum(record.activeKw) / record.activeKw.length);
-  const max = defaults.take(loads?.dampingKw?.max, meanKw, 'loads.dampingKw.max', 'kW');
+  // A stated minimum above the mean is the user's own, and the maximum can't be less.
+  const most = Math.max(meanKw, loads?.dampingKw?.min ?? 0);
+  const max = defaults.take(loads?.dampingKw?.max, most, 'loads.dampingKw.max', 'kW');
   if (loads?.distorting?.length === 0) defaults.note('loads.distorting.none', 'loads.distorting', {});
   if (loads?.backgroundPct?.length === 0) defaults.note('loads.backgroundPct.none', 'loads.backgroundPct', {});
   return {

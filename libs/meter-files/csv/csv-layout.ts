@@ -33,6 +33,7 @@ interface Candidate {
   row: Row;
   lastHeaderRow: number;
   header: HeaderColumn[];
+  before: Row[];
   data: Row[];
   score: number;
 }
@@ -124,6 +125,7 @@ function headless(rows: Row[], delimiter: number): Candidate[] {
       row: { cells: header.map(() => ''), number: 0 },
       lastHeaderRow: number,
       header,
+      before: [],
       data,
       score: row.cells.length,
     },
@@ -151,7 +153,9 @@ function candidateAt(rows: Row[], index: number, delimiter: number, map: MeterMa
   const followed = data[0]?.cells.some((cell) => timeContent([cell]) !== null && isDated(cell) !== null) === true;
   const score =
     roles.length + (followed ? FOLLOWED : 0) + (followed && data[0]!.cells.length === header.length ? FOLLOWED : 0);
-  return [{ delimiter, row, lastHeaderRow, header, data: data.slice(0, SAMPLE_ROWS), score }];
+  return [
+    { delimiter, row, lastHeaderRow, header, before: rows.slice(0, index), data: data.slice(0, SAMPLE_ROWS), score },
+  ];
 }
 
 /** A row of units under the names: nothing else in it but words without a number. */
@@ -185,8 +189,22 @@ function layoutOf(found: Candidate, map: MeterMap): CsvLayout {
     ]);
   }
   const choices = columnChoices(header, map, row.number);
+  refuseDataBefore(found, time, choices);
   const mark = map.stamp ?? time.mark;
   return { delimiter, names, headerRow: row.number, lastHeaderRow, time: { ...time, mark }, choices, header };
+}
+
+/** Rows of data above the header would be lost as if they were a preamble. */
+function refuseDataBefore({ before, header }: Candidate, time: TimeColumns, choices: ColumnChoice[]): void {
+  const [choice] = choices;
+  const isData = ({ cells }: Row) =>
+    cells.length === header.length &&
+    isDated(cells[time.stamp] ?? '') !== null &&
+    choice!.columns.every(({ column }) => isNumber(cells[column] ?? ''));
+  const data = before.find(isData);
+  if (data === undefined) return;
+  const expected = 'the names of the columns above the first row of data';
+  throw new InputProblem([{ code: 'unreadable', row: data.number, expected, found: 'data' }]);
 }
 
 function mappedTime(header: readonly HeaderColumn[], map: MeterMap): TimeColumns | null {

@@ -27,6 +27,7 @@ export async function readCsv(source: MeterBytes, options: ReadOptions, lane: La
   const layout = await layoutOf(buffer, options);
   const reader = new RowReader(layout, map);
   await readRows(buffer, layout, reader, lane);
+  reader.stamps.end();
   reader.problems.refuse();
   if (reader.rows.count === 0) {
     throw new InputProblem([{ code: 'empty-file', expected: 'rows of data under the header', found: 'none' }]);
