@@ -5,6 +5,7 @@ import {
   compileFormula,
   exactBox,
   formulaRange,
+  InputProblem,
   type MeterColumns,
   newCarried,
   type PreparedTariff,
@@ -22,9 +23,15 @@ import { runs, SEED } from '../support/soak.js';
 /** Bounds may be a cent off on either side of a rounding, never more. */
 const WIDTH = 1e-6;
 
+// A factor that rounds to 0 has no ratio: such a tariff is refused, and there is nothing to bound.
 function billsOf(prepared: PreparedTariff, columns: MeterColumns): number[] {
   const carried = newCarried(prepared);
-  return prepared.calendar.months.map((_, m) => billMonth(prepared, m, columns, carried));
+  try {
+    return prepared.calendar.months.map((_, m) => billMonth(prepared, m, columns, carried));
+  } catch (problem) {
+    if (problem instanceof InputProblem && problem.code === 'not-finite') return [];
+    throw problem;
+  }
 }
 
 // A meter, the same with more and less of everything, and one somewhere between.
