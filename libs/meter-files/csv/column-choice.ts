@@ -52,7 +52,9 @@ function candidatesOf(header: readonly HeaderColumn[], map: MeterMap): Candidate
     ...(said.reactive !== undefined ? (['lagging', 'leading'] as const) : []),
     ...(splitSaid ? (['reactive', 'lagging', 'leading'] as const) : []),
   ]);
-  const taken = new Set(Object.values(said).map((column) => columnNamed(header, column, 'columns')));
+  const taken = new Set(
+    Object.entries(said).map(([quantity, column]) => columnNamed(header, column, `columns.${quantity}`)),
+  );
   const candidates = {} as Candidates;
   for (const quantity of QUANTITIES) {
     const mapped = said[quantity as MeterColumn];

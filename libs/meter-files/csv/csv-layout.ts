@@ -22,6 +22,16 @@ export interface CsvLayout {
   header: readonly HeaderColumn[];
 }
 
+/** The bytes read so far, the row of the file they begin with, and whether there are more. */
+export interface CsvView {
+  bytes: Uint8Array;
+  start: number;
+  end: number;
+  rowEnd: number;
+  rowsBefore: number;
+  ended: boolean;
+}
+
 interface Row {
   cells: string[];
   /** counted from 1 */
@@ -40,7 +50,7 @@ interface Candidate {
 
 const DELIMITERS = [';', '\t', '|', ','] as const;
 /** Rows of the buffer that are looked at for a header, at first and where that does not show one. */
-const LOOKS = [40, 400];
+const LOOKS = [40, Number.POSITIVE_INFINITY];
 const SAMPLE_ROWS = 24;
 /** Added to the score of a header with a dated row behind it, and again where that row is as wide. */
 const FOLLOWED = 500;
@@ -52,31 +62,29 @@ const FOLLOWED = 500;
  * @returns the layout, or null where there is no header among these rows
  * @throws InputProblem where a column that is needed is missing
  */
-export function findLayout(
-  view: { bytes: Uint8Array; start: number; end: number; rowEnd: number; rowsBefore: number },
-  map: MeterMap,
-): CsvLayout | null {
+export function findLayout(view: CsvView, map: MeterMap): CsvLayout | null {
   const separators = map.separator === undefined ? DELIMITERS : [map.separator];
   // the header of most files stands near their beginning
   for (const look of LOOKS) {
     const candidates = separators.flatMap((separator) => candidatesAt(rowsOf(view, separator, look), separator, map));
     const best = candidates.reduce<Candidate | null>((a, b) => (a === null || b.score > a.score ? b : a), null);
-    if (best !== null && (best.score >= FOLLOWED || look === LOOKS.at(-1))) return layoutOf(best, map);
+    if (best !== null && (best.score >= FOLLOWED || (look === LOOKS.at(-1) && isFinal(best, view)))) {
+      return layoutOf(best, map);
+    }
   }
   return null;
+}
+
+/** A header whose data are not dated is taken where there is nothing more to read, or the data are as wide as it is. */
+function isFinal({ data, header }: Candidate, { ended }: CsvView): boolean {
+  return ended || data[0]?.cells.length === header.length;
 }
 
 /**
  * Whether the rows look like data without names.
  * @param view the bytes read so far
  */
-export function looksTabular(view: {
-  bytes: Uint8Array;
-  start: number;
-  end: number;
-  rowEnd: number;
-  rowsBefore: number;
-}) {
+export function looksTabular(view: CsvView): boolean {
   return DELIMITERS.some((separator) =>
     rowsOf(view, separator, SAMPLE_ROWS).some(
       ({ cells }) => cells.length > 1 && cells.some((cell) => isDated(cell) !== null) && cells.some(isNumber),
@@ -84,11 +92,7 @@ export function looksTabular(view: {
   );
 }
 
-function rowsOf(
-  view: { bytes: Uint8Array; start: number; end: number; rowEnd: number; rowsBefore: number },
-  separator: string,
-  most: number,
-): Row[] {
+function rowsOf(view: CsvView, separator: string, most: number): Row[] {
   const cells = new RowCells();
   const marks = { delimiter: separator.charCodeAt(0), rowEnd: view.rowEnd };
   const rows: Row[] = [];

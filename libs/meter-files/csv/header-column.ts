@@ -30,15 +30,19 @@ export interface HeaderColumn {
  * @param index its column, counted from 0
  */
 export function readHeaderColumn(name: string, index: number): HeaderColumn {
-  const { unit, rest } = findUnit(name);
-  const words = [...wordsOf(rest), ...signWords(rest)];
+  const found = findUnit(name);
+  const words = [...wordsOf(found.rest), ...signWords(found.rest)];
+  // “reactive energy (kv rh)” is no voltage
+  const misread = (found.unit?.family === 'voltage' || found.unit?.family === 'current') && says(words, 'reactive');
+  const unit = misread ? null : found.unit;
+  const { rest } = found;
   const role = roleOf(words, unit);
   const measured = role !== null && role !== 'time' && role !== 'standby';
   return {
     index,
     name,
     unit,
-    foreignUnit: measured && unit === null && hasForeignUnit(name),
+    foreignUnit: misread || (measured && unit === null && hasForeignUnit(name)),
     role,
     mark: role === 'time' ? markOf(words) : null,
     zone: role === 'time' ? zoneOf(name) : null,

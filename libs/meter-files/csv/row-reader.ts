@@ -39,7 +39,7 @@ export class RowReader {
 
   constructor(layout: CsvLayout, map: MeterMap) {
     const used = layout.choices.flatMap(({ columns }) => columns);
-    this.columns = [...new Set(used.map(({ column }) => column))];
+    this.columns = [...new Set(used.map(({ column }) => column))].sort((a, b) => a - b);
     this.rows = new StampedRows(this.columns.length);
     this.mark = new DecimalMark(map.decimal, layout.delimiter);
     this.stamps = new RowStamps(this.rows, layout.time, this.problems);
