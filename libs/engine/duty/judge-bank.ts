@@ -28,6 +28,8 @@ export interface JudgeBasis {
   supply: Supply;
   loads: Loads;
   reconnectDelayS: number;
+  /** the switches limit inrush: it is not judged */
+  limitsInrush?: boolean;
 }
 
 /** The bank judged: network, duties, stored charge, inrush, and what speaks against it. */
@@ -86,7 +88,7 @@ export function judgeBank(model: NetworkModel, bank: Bank, levels: Level[], basi
     ...stages.flatMap((stage, g) => [
       ...stage.duties(),
       ...dischargeDuty(bank, charge[g]!, basis.rules),
-      ...inrushDuty(bank, inrush[g]!, basis.rules),
+      ...(basis.limitsInrush === true ? [] : inrushDuty(bank, inrush[g]!, basis.rules)),
     ]),
     ...bankDuties.duties(),
   ];

@@ -37,7 +37,8 @@ export function quickJudge(model: NetworkModel, bank: Bank, basis: JudgeBasis): 
     for (const stage of stages) stage.take(flow);
   });
   const site = { ...basis, nominalV: basis.voltages.nominalV, shortCircuitMva: ends.shortCircuitMva };
-  const inrush = inrushStages(bank, site).flatMap((stage) => inrushDuty(bank, stage, basis.rules));
+  const closing = basis.limitsInrush === true ? [] : inrushStages(bank, site);
+  const inrush = closing.flatMap((stage) => inrushDuty(bank, stage, basis.rules));
   const duties = [...stages.flatMap((stage) => stage.duties()), ...network.duties(), ...inrush];
   const worst = (rows: typeof duties): Verdict =>
     rows.reduce<Verdict>((verdict, duty) => graver(verdict, duty.verdict), 'clear');

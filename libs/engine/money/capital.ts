@@ -90,6 +90,29 @@ export function capitalOf(bank: Bank, basis: CostBasis): Capital {
   return { total: rest + contingency.amount, lines: [...before, contingency] };
 }
 
+/**
+ * What a bank of one reactor ratio costs new, as a number: the total of `capitalOf` to its last bits.
+ * @param sums ΣQ_N, stages and reactor ratio of the bank
+ * @param basis price book, cabinets, switch kind
+ * @returns total
+ * @source method-money
+ */
+export function capitalTotal(
+  { ratedKvar, stages, reactorPct }: { ratedKvar: number; stages: number; reactorPct: number },
+  basis: CostBasis,
+): number {
+  const { prices } = basis;
+  const reactor = prices.reactors?.find((entry) => entry.reactorPct === reactorPct);
+  const kind = prices.switches?.find((entry) => entry.kind === basis.switchKind);
+  const cabinet = cheapestCabinets(basis, stages, ratedKvar);
+  const perKvar =
+    (prices.perKvar ?? 0) + (reactor?.perKvar ?? 0) + (kind?.perKvar ?? 0) + (prices.installationPerKvar ?? 0);
+  const perStage = (prices.perStage ?? 0) + (kind?.perStage ?? 0);
+  const fixed = (prices.installationFixed ?? 0) + (prices.fixed ?? 0);
+  const cabinets = cabinet === null ? 0 : cabinet.count * cabinet.price;
+  return (perKvar * ratedKvar + perStage * stages + cabinets + fixed) * (1 + (prices.contingencyPct ?? 0) / 100);
+}
+
 type Term = [quantity: number, price: number | undefined];
 
 function line(item: CapitalLine['item'], terms: readonly Term[]): CapitalLine {
@@ -117,8 +140,17 @@ function switchTerms({ prices, switchKind }: CostBasis, stages: number, kvar: nu
   ];
 }
 
+function cabinetTerms(basis: CostBasis, stages: number, kvar: number): Term[] {
+  const best = cheapestCabinets(basis, stages, kvar);
+  return best === null ? [] : [[best.count, best.price]];
+}
+
 // n cabinets of one kind hold all rated kvar and all stages: the least price, then fewer, then the first.
-function cabinetTerms({ prices, cabinets }: CostBasis, stages: number, kvar: number): Term[] {
+function cheapestCabinets(
+  { prices, cabinets }: CostBasis,
+  stages: number,
+  kvar: number,
+): { count: number; price: number } | null {
   let best: { count: number; price: number } | null = null;
   for (const cabinet of cabinets) {
     const count = Math.max(
@@ -126,9 +158,8 @@ function cabinetTerms({ prices, cabinets }: CostBasis, stages: number, kvar: num
       Math.ceil(stages / cabinet.maxStages - FIT_WIDTH),
     );
     const price = prices.cabinets?.find(({ name }) => name === cabinet.name)?.price ?? 0;
-    const cheaper = best === null || count * price < best.count * best.price;
-    const asCheap = best !== null && count * price === best.count * best.price;
-    if (cheaper || (asCheap && best !== null && count < best.count)) best = { count, price };
+    const saves = best === null ? 1 : best.count * best.price - count * price;
+    if (best === null || saves > 0 || (saves === 0 && count < best.count)) best = { count, price };
   }
-  return best === null ? [] : [[best.count, best.price]];
+  return best;
 }

@@ -27,8 +27,10 @@ export function controlReach(
   view: Pick<ControllerView, 'intervalS' | 'voltageScale' | 'standby'>,
 ): ControlReach {
   const UNHELD = { aboveKvar: Number.POSITIVE_INFINITY, belowKvar: Number.POSITIVE_INFINITY };
-  const most = control.stepDelayS === 0 ? bank.stageCount : Math.max(1, Math.floor(view.intervalS / control.stepDelayS));
-  if (view.voltageScale !== null || view.standby !== null || bank.fixedKvar > 0 || most < bank.stageCount) return UNHELD;
+  const most =
+    control.stepDelayS === 0 ? bank.stageCount : Math.max(1, Math.floor(view.intervalS / control.stepDelayS));
+  if (view.voltageScale !== null || view.standby !== null || bank.fixedKvar > 0 || most < bank.stageCount)
+    return UNHELD;
   const bandKvar = control.responseRatio * bank.smallestKvar;
   const largestKvar = bank.classes[0]?.kvar ?? 0;
   const settled = control.mode === 'nearestLevel' ? largestKvar / 2 : largestKvar - bandKvar;

@@ -1,4 +1,4 @@
-import { firstAtLeast, type LevelTable } from './level-table.js';
+import { firstAtLeast, type LevelTable, levelTable } from './level-table.js';
 import type { SwitchedBank } from './switched-bank.js';
 
 /** Comparisons of candidates carry this share of the smallest stage; the two response thresholds are exact. */
@@ -20,9 +20,13 @@ export interface Decision {
   bandKvar: number;
   /** receives the count per class to go to */
   chosen: Int32Array;
-  /** the bank's count vectors by level */
+  /** the bank's vectors by level and the one taken so far; made when it is first needed */
+  search?: LevelSearch;
+}
+
+interface LevelSearch {
   table: LevelTable;
-  /** the vector taken so far, −1 for none */
+  /** −1 for none */
   nearest: number;
   nearestSwitchings: number;
 }
@@ -69,13 +73,15 @@ function nearestOfOneSizeInto(bank: SwitchedBank, decision: Decision): void {
 // Vectors are looked at from what is wanted outwards: the first reachable one sets the least distance, and only those
 // as near as it are compared further. Present counts are always reachable, so one is found.
 function nearestOfManyInto(bank: SwitchedBank, decision: Decision): void {
-  const { voltageScale, wantedKvar, table } = decision;
-  const { levelKvar, counts } = table;
+  const { voltageScale, wantedKvar } = decision;
+  decision.search ??= { table: levelTable(bank), nearest: -1, nearestSwitchings: 0 };
+  const { search } = decision;
+  const { levelKvar, counts } = search.table;
   const tolerance = COMPARISON_SHARE * bank.smallestKvar;
-  let above = firstAtLeast(table, wantedKvar / voltageScale);
+  let above = firstAtLeast(search.table, wantedKvar / voltageScale);
   let below = above - 1;
   let mostOff = Number.POSITIVE_INFINITY;
-  decision.nearest = -1;
+  search.nearest = -1;
   while (above < levelKvar.length || below >= 0) {
     const offAbove =
       above < levelKvar.length ? Math.abs(levelKvar[above]! * voltageScale - wantedKvar) : Number.POSITIVE_INFINITY;
@@ -83,29 +89,29 @@ function nearestOfManyInto(bank: SwitchedBank, decision: Decision): void {
     const off = Math.min(offAbove, offBelow);
     if (off > mostOff) break;
     const vector = offBelow <= offAbove ? below-- : above++;
-    if (takeNearer(decision, vector, tolerance)) mostOff = Math.min(mostOff, off + tolerance);
+    if (takeNearer(decision, search, vector, tolerance)) mostOff = Math.min(mostOff, off + tolerance);
   }
   const classes = bank.classes.length;
-  for (let c = 0; c < classes; c++) decision.chosen[c] = counts[decision.nearest * classes + c]!;
+  for (let c = 0; c < classes; c++) decision.chosen[c] = counts[search.nearest * classes + c]!;
 }
 
 // Of vectors equally near: fewest switchings, then the lower level, then the lexicographically smaller one.
-function takeNearer(decision: Decision, vector: number, tolerance: number): boolean {
-  const switchings = switchingsTo(decision, vector);
+function takeNearer(decision: Decision, search: LevelSearch, vector: number, tolerance: number): boolean {
+  const switchings = switchingsTo(decision, search.table, vector);
   if (switchings < 0) return false;
-  const { nearest, nearestSwitchings, table, voltageScale } = decision;
-  const apartKvar = nearest < 0 ? 0 : (table.levelKvar[vector]! - table.levelKvar[nearest]!) * voltageScale;
+  const { nearest, nearestSwitchings, table } = search;
+  const apartKvar = nearest < 0 ? 0 : (table.levelKvar[vector]! - table.levelKvar[nearest]!) * decision.voltageScale;
   const lower = apartKvar < -tolerance || (apartKvar <= tolerance && table.rank[vector]! < table.rank[nearest]!);
   if (nearest < 0 || switchings < nearestSwitchings || (switchings === nearestSwitchings && lower)) {
-    decision.nearest = vector;
-    decision.nearestSwitchings = switchings;
+    search.nearest = vector;
+    search.nearestSwitchings = switchings;
   }
   return true;
 }
 
 // Switchings to a vector, −1 where it is out of reach.
-function switchingsTo(decision: Decision, vector: number): number {
-  const { connected, free, table, mostSwitchings } = decision;
+function switchingsTo(decision: Decision, table: LevelTable, vector: number): number {
+  const { connected, free, mostSwitchings } = decision;
   const classes = connected.length;
   let switchings = 0;
   for (let c = 0; c < classes; c++) {

@@ -1,10 +1,6 @@
 import type { Control } from './control.js';
 import { type Decision, nearestLevelInto, oneByOneInto } from './decide.js';
-import { type LevelTable, levelTable } from './level-table.js';
 import type { SwitchedBank } from './switched-bank.js';
-
-/** Banks of one size and the controller that goes stage by stage need no table. */
-const NO_TABLE: LevelTable = { levelKvar: new Float64Array(0), counts: new Int32Array(0), rank: new Int32Array(0) };
 
 /** What the controller sees, one entry a valid interval, length n. */
 export interface ControllerView {
@@ -148,9 +144,6 @@ class SwitchState {
       voltageScale: 1,
       wantedKvar: 0,
       bandKvar: this.bandKvar,
-      table: bank.classes.length > 1 && control.mode === 'nearestLevel' ? levelTable(bank) : NO_TABLE,
-      nearest: -1,
-      nearestSwitchings: 0,
     };
   }
 

@@ -3,6 +3,7 @@ import { marginMap } from '../duty/margin-map.js';
 import { CAPACITOR_RULES, graver, type Verdict } from '../duty/rules.js';
 import type { Bank } from '../layout/bank.js';
 import { bankLevels, summarizeBank } from '../layout/levels.js';
+import type { Money } from '../money/money-result.js';
 import type { Control } from '../operation/control.js';
 import { summarizeOperation } from '../operation/operation.js';
 import type { Remark } from '../problem.js';
@@ -24,6 +25,19 @@ export interface Said {
   atBest?: Verdict;
 }
 
+/** A bank and its controller, and what led to them. */
+export interface Choice {
+  bank: Bank;
+  control: Control;
+  said: Said;
+  /** its switches limit inrush, which is then not judged */
+  limitsInrush?: boolean;
+  /** the bank simulated, where that has been done */
+  operated?: Operated;
+  /** what it costs and saves, from the bank simulated */
+  money?: (operated: Operated) => Money;
+}
+
 /**
  * Judges one bank on one study and composes the outcome.
  * @param kind which command asked
@@ -32,15 +46,11 @@ export interface Said {
  * @returns the outcome
  * @source method-limits
  */
-export function outcomeOf(
-  kind: Outcome['kind'],
-  study: Study,
-  choice: { bank: Bank; control: Control; said: Said },
-): Outcome {
+export function outcomeOf(kind: Outcome['kind'], study: Study, choice: Choice): Outcome {
   const { bank, control, said } = choice;
   const levels = bankLevels(bank, study.site.nominalV);
-  const operated = operate(study, bank, control);
-  const judgement = judge(study, bank, control);
+  const operated = choice.operated ?? operate(study, bank, control);
+  const judgement = judge(study, bank, control, choice.limitsInrush);
   const bankSummary = summarizeBank(bank, levels, study.site.nominalV);
   const conductorMinA =
     (CAPACITOR_RULES[study.site.rules].conductorRatio * bankSummary.effectiveKvar * 1000) /
@@ -57,7 +67,7 @@ export function outcomeOf(
     inrush: { stages: judgement.inrush },
     conductorMinA,
     robustness: null,
-    money: null,
+    money: choice.money?.(operated) ?? null,
     verdict: graver(overallVerdict(study, judgement), said.atBest ?? 'clear'),
     reasons: [...said.reasons, ...reasons(study, bank, operated, judgement)],
     assumptions: [...study.assumptions, ...said.assumptions],
@@ -74,7 +84,7 @@ export function outcomeOf(
     result,
     series: series(study, operated),
     margins: marginMap(study.model, bank, levels, basisOf(study, control)),
-    rival: rivalOf(study, bank, control, result.verdict),
+    rival: rivalOf(study, choice, result.verdict),
   };
 }
 
@@ -102,11 +112,13 @@ export function basisOf(study: Study, control: Control): JudgeBasis {
  * @param study site and record
  * @param bank the bank
  * @param control settings; the reconnection delay sets the resistors
+ * @param limitsInrush its switches limit inrush, which is then not judged
  * @returns judgement
  * @source method-limits
  */
-export function judge(study: Study, bank: Bank, control: Control): Judgement {
-  return judgeBank(study.model, bank, bankLevels(bank, study.site.nominalV), basisOf(study, control));
+export function judge(study: Study, bank: Bank, control: Control, limitsInrush = false): Judgement {
+  const basis = { ...basisOf(study, control), limitsInrush };
+  return judgeBank(study.model, bank, bankLevels(bank, study.site.nominalV), basis);
 }
 
 /**
@@ -134,14 +146,14 @@ function series(study: Study, operated: Operated): Outcome['series'] {
 }
 
 // The same nameplates built the other way: shown beside the bank wherever one of the two is near or over a limit.
-function rivalOf(study: Study, bank: Bank, control: Control, verdict: Verdict): Rival | null {
+function rivalOf(study: Study, { bank, control, limitsInrush }: Choice, verdict: Verdict): Rival | null {
   const detuned = bank.groups.some((group) => group.reactorPct > 0);
   if (bank.groups.length === 0 || (!detuned && verdict === 'clear')) return null;
   const groups = bank.groups.map((group) => ({ ...group, reactorPct: detuned ? 0 : RIVAL_REACTOR_PCT }));
   const rival = { ...bank, groups };
   const levels = bankLevels(rival, study.site.nominalV);
   const margins = marginMap(study.model, rival, levels, basisOf(study, control));
-  const judgement = judge(study, rival, control);
+  const judgement = judge(study, rival, control, limitsInrush);
   return {
     bank: rival,
     verdict: overallVerdict(study, judgement),

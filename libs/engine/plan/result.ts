@@ -4,6 +4,7 @@ import type { InrushStage } from '../duty/inrush.js';
 import type { Verdict } from '../duty/rules.js';
 import type { BankSummary } from '../layout/levels.js';
 import type { NetworkSummary } from '../network/network-check.js';
+import type { Money } from '../money/money-result.js';
 import type { Control } from '../operation/control.js';
 import type { OperationSummary } from '../operation/operation.js';
 import type { Remark } from '../problem.js';
@@ -24,7 +25,8 @@ export interface Result {
   inrush: { stages: InrushStage[] };
   conductorMinA: number;
   robustness: null;
-  money: null;
+  /** null without a tariff */
+  money: Money | null;
   verdict: Verdict;
   reasons: Remark[];
   assumptions: Remark[];

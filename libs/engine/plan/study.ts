@@ -3,7 +3,7 @@ import { type NetworkModel, networkModel } from '../network/network-model.js';
 import type { Control } from '../operation/control.js';
 import { type MeterAfter, meterAfter } from '../operation/meter-after.js';
 import { type OperationMonth, operationMonths, type Simulated } from '../operation/operation.js';
-import { simulate } from '../operation/simulate.js';
+import { type ControllerView, simulate } from '../operation/simulate.js';
 import { switchedBank } from '../operation/switched-bank.js';
 import type { Remark } from '../problem.js';
 import { tanFromPowerFactor } from '../quantity/power-factor.js';
@@ -98,12 +98,7 @@ export interface Operated extends Simulated {
  */
 export function operate(study: Study, bank: Bank, control: Control): Operated {
   const { record, load } = study;
-  const tanSet = tanFromPowerFactor(control.setPointPowerFactor);
-  const wantedKvar = new Float64Array(record.beginS.length);
-  for (let i = 0; i < wantedKvar.length; i++) {
-    wantedKvar[i] = load.reactiveKvar[i]! - targetKw(load.activeKw[i]!, study.target.onExport) * tanSet;
-  }
-  const view = { ...record, wantedKvar, voltageScale: study.voltageScale };
+  const view = controllerView(study, control.setPointPowerFactor);
   const run = simulate(switchedBank(bank, study.site.nominalV), control, view);
   const deliveredKvar = atVoltage(run.connectedKvar, study.voltageScale);
   const meter = meterAfter(record, load, deliveredKvar);
@@ -117,6 +112,24 @@ export function operate(study: Study, bank: Bank, control: Control): Operated {
     control,
     months: operationMonths(meter, study.months, record.intervalS / 3600),
   };
+}
+
+/**
+ * What a controller sees of the record at a set point: wanted = Q − P⁺·tan φ_set at the bus.
+ * @param study site and record
+ * @param setPointPowerFactor λ steered towards
+ * @returns columns of length n
+ * @source method-controller
+ */
+export function controllerView(study: Study, setPointPowerFactor: number): ControllerView {
+  const { record, load } = study;
+  const tanSet = tanFromPowerFactor(setPointPowerFactor);
+  const wantedKvar = new Float64Array(record.beginS.length);
+  for (let i = 0; i < wantedKvar.length; i++) {
+    wantedKvar[i] = load.reactiveKvar[i]! - targetKw(load.activeKw[i]!, study.target.onExport) * tanSet;
+  }
+  const { intervalS, beginS, standby } = record;
+  return { intervalS, beginS, wantedKvar, voltageScale: study.voltageScale, standby };
 }
 
 /**
