@@ -209,18 +209,6 @@ const refused: [why: string, tariff: unknown, path: string, code: string][] = [
     'tariff.clauses[0].expression',
     'out-of-range',
   ],
-  [
-    'a formula that breaks off',
-    oneClause({ name: 'f', kind: 'formula', expression: 'max(maxKw, 1' }),
-    'tariff.clauses[0].expression',
-    'unreadable',
-  ],
-  [
-    'a formula with an unknown name',
-    oneClause({ name: 'f', kind: 'formula', expression: 'maxKw.evening' }),
-    'tariff.clauses[0].expression',
-    'inconsistent',
-  ],
   ['a holiday that does not exist', { holidays: ['2025-02-29'] }, 'tariff.holidays[0]', 'out-of-range'],
   ['a bill of no month', { billed: [{ month: '2024-13', total: 1 }] }, 'tariff.billed[0].month', 'out-of-range'],
 ];
