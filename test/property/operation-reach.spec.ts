@@ -32,7 +32,7 @@ describe(`a controller (seed ${SEED})`, () => {
       });
       const beginS = Float64Array.from({ length: n }, (_, i) => i * 900);
       const view = { intervalS: 900, beginS, wantedKvar, voltageScale: null, standby: null };
-      const { aboveKvar, belowKvar } = controlReach(bank, control, view);
+      const { aboveKvar, belowKvar } = controlReach({ ...bank, largestKvar: classes[0]!.kvar }, control, view);
       if (Number.isFinite(aboveKvar)) bounded++;
       for (const [i, connected] of simulate(bank, control, view).connectedKvar.entries()) {
         const where = `${run} ${i} ${JSON.stringify(control)}`;

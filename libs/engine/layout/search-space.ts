@@ -29,6 +29,10 @@ export interface Build {
   largestRatedKvar: number;
   /** effective, all stages [kvar] */
   totalKvar: number;
+  /** effective [kvar] */
+  largestKvar: number;
+  /** effective [kvar] */
+  smallestKvar: number;
 }
 
 /** Everything a search chooses from. */
@@ -114,13 +118,17 @@ function buildOf(
   let ratedKvar = 0;
   let totalKvar = 0;
   let largestRatedKvar = 0;
+  let largestKvar = 0;
   let smallestKvar = 0;
   for (let size = stageKvar.length - 1; size >= 0; size--) {
     const count = counts[size]!;
     if (count === 0) continue;
     const kvar = stageKvar[size]!;
     const effective = effectiveKvar(stageOf(kvar, ratedV, reactorPct), basis.nominalV);
-    if (stages === 0) largestRatedKvar = kvar;
+    if (stages === 0) {
+      largestRatedKvar = kvar;
+      largestKvar = effective;
+    }
     stages += count;
     ratedKvar += count * kvar;
     totalKvar += count * effective;
@@ -128,7 +136,8 @@ function buildOf(
   }
   const fits = maxTotalKvar === null ? totalKvar - smallestKvar < basis.greatestKvar : totalKvar <= maxTotalKvar;
   if (!fits) return null;
-  return { counts: counts.slice(), ratedV, reactorPct, stages, ratedKvar, largestRatedKvar, totalKvar };
+  const sums = { stages, ratedKvar, largestRatedKvar, totalKvar, largestKvar, smallestKvar };
+  return { counts: counts.slice(), ratedV, reactorPct, ...sums };
 }
 
 const REACTOR_QUALITY = 30;

@@ -121,12 +121,15 @@ class SwitchState {
   readonly #onSince: Int32Array;
   readonly #intervalsOn: Float64Array;
   readonly #decision: Decision;
+  /** no stage waits longer than an interval for its reconnection, so whatever is off is free */
+  readonly #alwaysFree: boolean;
 
   constructor(bank: SwitchedBank, control: Control, intervalS: number) {
     this.#bank = bank;
     this.#control = control;
     this.switchings = new Int32Array(bank.stageCount);
     this.levelKvar = bank.fixedKvar;
+    this.#alwaysFree = control.reconnectDelayS <= intervalS;
     this.bandKvar = bank.classes.length === 0 ? Number.POSITIVE_INFINITY : control.responseRatio * bank.smallestKvar;
     this.#on = new Uint8Array(bank.stageCount);
     this.#offSinceS = new Float64Array(bank.stageCount).fill(Number.NEGATIVE_INFINITY);
@@ -192,6 +195,10 @@ class SwitchState {
     const delayS = this.#control.reconnectDelayS;
     for (let c = 0; c < this.#bank.classes.length; c++) {
       const { stages } = this.#bank.classes[c]!;
+      if (this.#alwaysFree) {
+        this.#decision.free[c] = stages.length - this.#decision.connected[c]!;
+        continue;
+      }
       let free = 0;
       for (let k = 0; k < stages.length; k++) {
         if (this.#on[stages[k]!] === 0 && beginS >= this.#offSinceS[stages[k]!]! + delayS) free++;

@@ -13,7 +13,7 @@ import type { Candidate } from './search.js';
 export function bestAttainableFactor(space: SearchSpace, judge: SiteSearchJudge): number | null {
   const bounded = candidatesOf(space).map((candidate) => ({
     candidate,
-    most: judge.cell(candidate, false).mostLowestFactor,
+    most: judge.bound(candidate, 'controller').mostLowestFactor,
   }));
   bounded.sort((a, b) => b.most - a.most);
   let best: number | null = null;

@@ -6,7 +6,6 @@ import type { PresentWeights } from '../money/present-weights.js';
 import { type Life, lossWPerKvar, replacements, runningCosts, switchLife } from '../money/running-cost.js';
 import { savingByMonth } from '../money/saving.js';
 import type { TariffMonth } from '../money/tariff-calendar.js';
-import type { BoundCell } from './bound-cell.js';
 import type { CandidateRun } from './candidate-run.js';
 import { useOf } from './price-bank.js';
 import type { Study } from './study.js';
@@ -34,6 +33,33 @@ export function lifeCost(life: Life, weights: PresentWeights): number {
   const { replacementIn } = weights;
   const found = replacements([life], replacementIn.length - 1);
   return found.reduce((sum, { month, amount }) => sum + amount * replacementIn[month]!, 0);
+}
+
+/** The most that is saved, and the fewest kvarh that are connected, from each month to the end of the record. */
+export interface BoundRest {
+  /** present value; one more than there are months */
+  mostSaving: Float64Array;
+  /** [kvarh] */
+  leastKvarh: Float64Array;
+}
+
+/**
+ * Bounds of all that is to come after each month.
+ * @param ground what every candidate is valued with
+ * @param leastBill no bill of a month is lower
+ * @param leastKvarh no fewer kvarh are connected in a month [kvarh]
+ * @returns sums from each month to the last
+ * @source derived
+ */
+export function boundRest(ground: WorthGround, leastBill: Float64Array, leastKvarh: Float64Array): BoundRest {
+  const months = leastBill.length;
+  const rest = { mostSaving: new Float64Array(months + 1), leastKvarh: new Float64Array(months + 1) };
+  for (let m = months - 1; m >= 0; m--) {
+    const saving = ground.weights.savingOfMonth[m]! * (ground.beforeTotals[m]! - leastBill[m]!);
+    rest.mostSaving[m] = rest.mostSaving[m + 1]! + saving;
+    rest.leastKvarh[m] = rest.leastKvarh[m + 1]! + leastKvarh[m]!;
+  }
+  return rest;
 }
 
 /** A build with one kind of switch: everything of its worth that does not depend on the record. */
@@ -71,24 +97,22 @@ export class BuildWorth {
 
   /**
    * No net present value of this build is greater.
-   * @param cell bounds of banks of its size
+   * @param rest bounds of banks of its size
    * @param run its simulation so far, or null
    * @param monthsDone months of it that count
    * @returns upper bound of the net present value
    * @source derived: each part of the net present value is bounded apart
    */
-  upperBound(cell: BoundCell, run: CandidateRun | null, monthsDone: number): number {
+  upperBound(rest: BoundRest, run: CandidateRun | null, monthsDone: number): number {
     const { beforeTotals, weights } = this.#ground;
-    let bound = -this.#certainCost;
-    let kvarh = monthsDone === 0 || run === null ? 0 : run.connectedKvarh[monthsDone - 1]!;
-    for (let m = 0; m < beforeTotals.length; m++) {
-      const after = m < monthsDone && run !== null ? run.afterTotals[m]! : cell.leastBill[m]!;
-      bound += weights.savingOfMonth[m]! * (beforeTotals[m]! - after);
-      if (m >= monthsDone) kvarh += cell.leastKvarh[m]!;
+    let saving = rest.mostSaving[monthsDone]!;
+    let kvarh = rest.leastKvarh[monthsDone]!;
+    if (run === null || monthsDone === 0) return saving - this.#certainCost - this.#lossPerKvarh * kvarh;
+    for (let m = 0; m < monthsDone; m++) {
+      saving += weights.savingOfMonth[m]! * (beforeTotals[m]! - run.afterTotals[m]!);
     }
-    bound -= this.#lossPerKvarh * kvarh;
-    if (run !== null && monthsDone > 0) bound -= this.#leastSwitchCost(run, monthsDone);
-    return bound;
+    kvarh += run.connectedKvarh[monthsDone - 1]!;
+    return saving - this.#certainCost - this.#lossPerKvarh * kvarh - this.#leastSwitchCost(run, monthsDone);
   }
 
   // A switch is replaced no later than its switchings so far say, at the least weight up to then.

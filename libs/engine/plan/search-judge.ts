@@ -3,20 +3,18 @@ import { graver, type Verdict } from '../duty/rules.js';
 import type { Bank } from '../layout/bank.js';
 import type { SettledCatalogue } from '../layout/candidates.js';
 import { bankOfBuild, type SearchSpace, type SwitchKind } from '../layout/search-space.js';
-import { rangeTariff } from '../money/bill-range.js';
 import type { CostBasis } from '../money/capital.js';
 import { presentWeights } from '../money/present-weights.js';
 import type { Control } from '../operation/control.js';
-import { controlReach } from '../operation/control-reach.js';
 import type { ControllerView } from '../operation/simulate.js';
-import { switchedBank } from '../operation/switched-bank.js';
-import { type BoundCell, CellBounds, type CellSize } from './bound-cell.js';
 import { CandidateRun, type RunGround, runColumns } from './candidate-run.js';
 import { BuildWorth, lifeCost, type WorthGround } from './candidate-worth.js';
+import { ClearScreen } from './clear-screen.js';
 import type { MoneyStudy } from './money-study.js';
 import { basisOf, judge, overallVerdict } from './outcome-of.js';
-import type { Candidate, Finished, SearchJudge } from './search.js';
+import type { BoundWidth, Candidate, Finished, SearchJudge, SharedBound } from './search.js';
 import { settleControl } from './settle-bank.js';
+import { SharedBounds } from './shared-bounds.js';
 import type { Site } from './site.js';
 import { controllerView, type Study } from './study.js';
 
@@ -30,11 +28,6 @@ export interface SearchGround {
   space: SearchSpace;
 }
 
-/** Sizes of cells: totals and reaches within these ratios share one. */
-const COARSE_RATIO = 1.12;
-const FINE_RATIO = 1.01;
-const REACH_RATIO = 1.2;
-
 /** A bank judged: its verdict and the greatest voltage distortion of its levels. */
 export interface JudgedBuild {
   verdict: Verdict;
@@ -46,11 +39,14 @@ export class SiteSearchJudge implements SearchJudge {
   readonly months: number;
   readonly demandedFactor: number | null;
   readonly #ground: SearchGround;
-  readonly #bounds: CellBounds;
+  readonly #shared: SharedBounds;
+  readonly #screen: ClearScreen;
+  /** by build and switches: 1 may be clear, 2 is not */
+  readonly #closedForms: Uint8Array;
+  readonly #paces: Control[] = [];
   readonly #runGround: RunGround;
   readonly #worthGround: WorthGround;
   readonly #worths: BuildWorth[] = [];
-  readonly #cells = new Map<string, BoundCell>();
   readonly #views: ControllerView[] = [];
   readonly #quick = new Map<string, Verdict>();
   readonly #judged = new Map<string, JudgedBuild>();
@@ -65,7 +61,8 @@ export class SiteSearchJudge implements SearchJudge {
     this.#ground = ground;
     this.months = months.length;
     this.demandedFactor = (site.catalogue?.mustMeetTarget ?? true) ? study.site.targetPowerFactor : null;
-    this.#bounds = new CellBounds(study, rangeTariff(prepared));
+    this.#screen = new ClearScreen(study);
+    this.#closedForms = new Uint8Array(2 * ground.space.builds.length);
     this.#runGround = { study, prepared, columns: runColumns(study.record.beginS.length) };
     this.#worthGround = {
       study,
@@ -75,6 +72,7 @@ export class SiteSearchJudge implements SearchJudge {
       weights,
       capacitorLives: lifeCost({ years, amount: 1 }, weights),
     };
+    this.#shared = new SharedBounds(this.#worthGround, prepared, ground.space);
   }
 
   /**
@@ -137,31 +135,23 @@ export class SiteSearchJudge implements SearchJudge {
     return made;
   }
 
-  cell(candidate: Candidate, coarse: boolean): BoundCell {
-    const { totalKvar } = this.#ground.space.builds[candidate.build]!;
-    if (coarse) return this.#cellOf(`${gridStep(totalKvar, COARSE_RATIO)}`, () => bySize(totalKvar, COARSE_RATIO));
-    const bank = this.bank(candidate);
-    const view = this.#view(candidate.setPoint);
-    const seen = switchedBank(bank, this.#ground.study.site.nominalV);
-    const reach = controlReach(seen, this.control(candidate, bank), view);
-    const size = gridStep(totalKvar, FINE_RATIO);
-    if (!Number.isFinite(reach.aboveKvar)) {
-      return this.#cellOf(`${size} fine`, () => bySize(totalKvar, FINE_RATIO));
-    }
-    const near = gridStep(reach.aboveKvar, REACH_RATIO);
-    const below = Number.isFinite(reach.belowKvar);
-    return this.#cellOf(`${size} ${near} ${below} ${candidate.setPoint}`, () => {
-      const kvar = REACH_RATIO ** near;
-      const wide = { aboveKvar: kvar, belowKvar: below ? kvar : Number.POSITIVE_INFINITY };
-      return { ...bySize(totalKvar, FINE_RATIO), wantedKvar: view.wantedKvar, reach: wide };
-    });
+  bound(candidate: Candidate, width: BoundWidth): SharedBound {
+    const build = this.#ground.space.builds[candidate.build]!;
+    if (width !== 'controller') return this.#shared.bySize(build, width);
+    return this.#shared.byController(candidate, this.#pace(candidate), this.#view(candidate.setPoint));
   }
 
-  #cellOf(key: string, size: () => CellSize): BoundCell {
-    const known = this.#cells.get(key);
+  // The delays follow from the switches, or from the site; only a natural reconnection delay asks for the bank.
+  #pace(candidate: Candidate): Pick<Control, 'mode' | 'responseRatio' | 'stepDelayS' | 'reconnectDelayS'> {
+    const { reconnectDelayS } = this.kind(candidate);
+    const given = this.#ground.site.control;
+    if (reconnectDelayS === null && given?.reconnectDelayS === undefined) {
+      return this.control(candidate, this.bank(candidate));
+    }
+    const known = this.#paces[candidate.kind];
     if (known !== undefined) return known;
-    const made = this.#bounds.cell(size());
-    this.#cells.set(key, made);
+    const made = this.control(candidate, this.bank(candidate));
+    this.#paces[candidate.kind] = made;
     return made;
   }
 
@@ -179,6 +169,20 @@ export class SiteSearchJudge implements SearchJudge {
   run(candidate: Candidate): CandidateRun {
     const bank = this.bank(candidate);
     return new CandidateRun(this.#runGround, bank, this.control(candidate, bank), this.#view(candidate.setPoint));
+  }
+
+  mayBeClear(candidate: Candidate): boolean {
+    const { limitsInrush } = this.kind(candidate);
+    const key = 2 * candidate.build + (limitsInrush ? 1 : 0);
+    const known = this.#closedForms[key];
+    if (known !== undefined && known !== 0) return known === 1;
+    const may = this.#screen.mayBeClear(
+      this.#ground.space.builds[candidate.build]!,
+      () => this.bank(candidate),
+      limitsInrush,
+    );
+    this.#closedForms[key] = may ? 1 : 2;
+    return may;
   }
 
   // Set point and delays don't move a verdict: no discharge resistor is given.
@@ -246,16 +250,4 @@ function stageOrder(a: Int32Array, b: Int32Array): number {
     if (a[size] !== b[size]) return a[size]! - b[size]!;
   }
   return 0;
-}
-
-function gridStep(kvar: number, ratio: number): number {
-  return Math.ceil(Math.log(kvar) / Math.log(ratio) - 1e-9);
-}
-
-function bySize(totalKvar: number, ratio: number): CellSize {
-  const step = gridStep(totalKvar, ratio);
-  const unheld = { aboveKvar: Number.POSITIVE_INFINITY, belowKvar: Number.POSITIVE_INFINITY };
-  // a little room for the powers of the ratio
-  const mostKvar = Math.max(totalKvar, ratio ** step * (1 + 1e-9));
-  return { mostKvar, leastKvar: ratio ** (step - 1) * (1 - 1e-9), wantedKvar: null, reach: unheld };
 }

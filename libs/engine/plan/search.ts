@@ -5,9 +5,8 @@ import type { SearchProof } from '../money/money-result.js';
 import type { Control } from '../operation/control.js';
 import { Stopped, type Watch } from '../problem.js';
 import { BestFirst } from './best-first.js';
-import type { BoundCell } from './bound-cell.js';
 import type { CandidateRun } from './candidate-run.js';
-import type { BuildWorth } from './candidate-worth.js';
+import type { BoundRest, BuildWorth } from './candidate-worth.js';
 
 /** A candidate of the search: a build, its kind of switch, its set point. */
 export interface Candidate {
@@ -27,15 +26,26 @@ export interface Finished extends Candidate {
   targetMet: boolean;
 }
 
+/** Bounds that many candidates share. */
+export interface SharedBound extends BoundRest {
+  /** no bank's lowest monthly power factor is higher */
+  mostLowestFactor: number;
+}
+
+/** How much of a candidate its bounds look at. */
+export type BoundWidth = 'about' | 'size' | 'controller';
+
 /** What the search asks of the rest of the engine; it knows no network, no tariff and no record itself. */
 export interface SearchJudge {
   months: number;
   /** power factor demanded in every month, or null */
   demandedFactor: number | null;
-  /** bounds of the banks of a candidate's size; `coarse` where nothing of its controller is looked at */
-  cell(candidate: Candidate, coarse: boolean): BoundCell;
+  /** bounds of the banks of about a candidate's size, of its very size, or of its size and its controller too */
+  bound(candidate: Candidate, width: BoundWidth): SharedBound;
   worth(build: number, kind: number): BuildWorth;
   run(candidate: Candidate): CandidateRun;
+  /** false where closed forms alone say that a candidate stands near a limit or over it */
+  mayBeClear(candidate: Candidate): boolean;
   /** what the flows say; the whole judgement is never milder */
   quickVerdict(candidate: Candidate): Verdict;
   verdict(candidate: Candidate): Verdict;
@@ -59,8 +69,10 @@ export const NEAR_VALUE = 0.005;
 /** Bounds carry this share of their size for the last bits of their sums. */
 const BOUND_WIDTH = 1e-9;
 
-/** How far a candidate has come: bounded by its size alone, by its controller too, judged and being simulated. */
-const STEP = { coarse: 0, fine: 1, simulated: 2 } as const;
+/** How far a candidate has come: bounds by about its size, by its size, by its controller, its flows judged. */
+const STEP = { about: 0, size: 1, controller: 2, flows: 3 } as const;
+/** So many months are simulated before the flows are judged: that takes longer, and most candidates are given up by then. */
+const MONTHS_BEFORE_FLOWS = 2;
 
 /**
  * The candidate of greatest net present value, exactly: candidates are taken by the upper bound of theirs, the greatest
@@ -84,9 +96,9 @@ class Search {
   readonly #open: BestFirst;
   readonly #step: Uint8Array;
   readonly #monthsDone: Uint16Array;
-  readonly #cells: (BoundCell | undefined)[] = [];
+  readonly #bounds: (SharedBound | undefined)[] = [];
   readonly #runs = new Map<string, CandidateRun>();
-  /** candidates only near a limit, with their bounds: looked at where no other is left */
+  /** candidates that are not clear, with their bounds: looked at where no clear one is left */
   readonly #watched: { id: number; bound: number }[] = [];
   readonly #finished: Finished[] = [];
   #best: Finished | null = null;
@@ -131,8 +143,8 @@ class Search {
       for (const [kind, entry] of kinds.entries()) {
         if (!mayBuild(made, entry)) continue;
         const first = (build * kinds.length + kind) * setPoints.length;
-        const cell = this.#judge.cell({ build, kind, setPoint: 0 }, true);
-        const bound = this.#judge.worth(build, kind).upperBound(cell, null, 0);
+        const shared = this.#judge.bound({ build, kind, setPoint: 0 }, 'about');
+        const bound = this.#judge.worth(build, kind).upperBound(shared, null, 0);
         for (let setPoint = 0; setPoint < setPoints.length; setPoint++) this.#open.push(first + setPoint, bound);
       }
     }
@@ -161,29 +173,37 @@ class Search {
   // One candidate brought one step further.
   #advance(id: number, bound: number): void {
     const candidate = this.#candidate(id);
-    if (this.#step[id] === STEP.coarse) this.#refine(id, candidate);
-    else if (this.#step[id] === STEP.fine) this.#judgeFlows(id, candidate, bound);
-    else this.#simulate(id, candidate);
+    const step = this.#step[id]!;
+    const done = this.#monthsDone[id]!;
+    if (step === STEP.about && this.#pool === 'clear' && !this.#judge.mayBeClear(candidate)) {
+      this.#watched.push({ id, bound });
+    } else if (step === STEP.about) this.#refine(id, candidate, 'size');
+    else if (step === STEP.size) this.#refine(id, candidate, 'controller');
+    else if (step === STEP.controller && done === Math.min(MONTHS_BEFORE_FLOWS, this.#judge.months - 1)) {
+      this.#judgeFlows(id, candidate, bound);
+    } else this.#simulate(id, candidate);
   }
 
-  #refine(id: number, candidate: Candidate): void {
-    this.#step[id] = STEP.fine;
-    const cell = this.#judge.cell(candidate, false);
-    this.#cells[id] = cell;
+  #refine(id: number, candidate: Candidate, width: 'size' | 'controller'): void {
+    this.#step[id] = STEP[width];
+    const shared = this.#judge.bound(candidate, width);
+    this.#bounds[id] = shared;
     const { demandedFactor } = this.#judge;
-    if (demandedFactor !== null && cell.mostLowestFactor < demandedFactor * (1 - BOUND_WIDTH)) {
-      this.#refused++;
+    if (demandedFactor !== null && shared.mostLowestFactor < demandedFactor * (1 - BOUND_WIDTH)) {
+      this.#giveUp(id);
       return;
     }
-    this.#open.push(id, this.#judge.worth(candidate.build, candidate.kind).upperBound(cell, null, 0));
+    this.#open.push(id, this.#judge.worth(candidate.build, candidate.kind).upperBound(shared, null, 0));
   }
 
   #judgeFlows(id: number, candidate: Candidate, bound: number): void {
-    this.#step[id] = STEP.simulated;
     const verdict = this.#judge.quickVerdict(candidate);
-    if (verdict === 'avoid') this.#refused++;
+    if (verdict === 'avoid') this.#giveUp(id);
     else if (verdict === 'watch' && this.#pool === 'clear') this.#watched.push({ id, bound });
-    else this.#open.push(id, bound);
+    else {
+      this.#step[id] = STEP.flows;
+      this.#open.push(id, bound);
+    }
   }
 
   #simulate(id: number, candidate: Candidate): void {
@@ -193,7 +213,7 @@ class Search {
     while (run.months < done) run.advance();
     const { demandedFactor, months } = this.#judge;
     if (demandedFactor !== null && run.monthsInTarget < done) {
-      if (done < months) this.#partly++;
+      if (done < months) this.#giveUp(id);
       else this.#finish(candidate, run);
       return;
     }
@@ -201,8 +221,14 @@ class Search {
       this.#finish(candidate, run);
       return;
     }
-    const bound = this.#judge.worth(candidate.build, candidate.kind).upperBound(this.#cells[id]!, run, done);
+    const bound = this.#judge.worth(candidate.build, candidate.kind).upperBound(this.#bounds[id]!, run, done);
     this.#open.push(id, bound);
+  }
+
+  // Out of the search: by its verdict, or because it can't or did not hold the target.
+  #giveUp(id: number): void {
+    if (this.#monthsDone[id]! > 0) this.#partly++;
+    else this.#refused++;
   }
 
   // Kinds that ask the same of the controller share a run.
@@ -267,11 +293,13 @@ class Search {
 
   #proof(rest: number): SearchProof {
     const left = this.#open.rest();
-    const partly = this.#partly + left.filter((id) => this.#monthsDone[id]! > 0).length;
-    const boundedAway = left.filter((id) => this.#monthsDone[id] === 0).length;
+    const begun = (id: number): boolean => this.#monthsDone[id]! > 0;
+    const watchedBegun = this.#watched.filter(({ id }) => begun(id)).length;
+    const partly = this.#partly + left.filter(begun).length + watchedBegun;
+    const boundedAway = left.filter((id) => !begun(id)).length;
     return {
       candidates: this.#space.candidates,
-      refused: this.#refused + this.#watched.length,
+      refused: this.#refused + this.#watched.length - watchedBegun,
       boundedAway,
       partlySimulated: partly,
       simulated: this.#finished.length,
