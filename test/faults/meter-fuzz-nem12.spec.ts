@@ -7,7 +7,7 @@ import { SlowRefusal } from '../support/slow-meter-reading.js';
 import { readNem12Slowly } from '../support/slow-nem12-reading.js';
 import { runs, SEED } from '../support/soak.js';
 
-const FILES = runs(600, 6_000);
+const FILES = runs(500, 6_000);
 
 /** Three invented days of one meter, active and reactive, with substitutes on the second. */
 function sample(): string {

@@ -62,7 +62,7 @@ const SITES: [string, Partial<Site>][] = [
   ['order 2.5', { loads: { distorting: tone(2.5), backgroundPct: [] } }],
   ['order 50', { loads: { distorting: tone(50), backgroundPct: [] } }],
   ['order 50, the other rules', { rules: 'ieee', loads: { distorting: tone(50), backgroundPct: [] } }],
-  ['a spectrum of nothing', { loads: { distorting: tone(5, 0), backgroundPct: [{ orderH: 7, pct: 0 }] } }],
+  ['a background of nothing', { loads: { distorting: tone(5), backgroundPct: [{ orderH: 7, pct: 0 }] } }],
   [
     'a load of no current',
     { loads: { distorting: [{ name: 'off', fundamentalA: 0, spectrum: 'six-pulse' }], backgroundPct: [] } },

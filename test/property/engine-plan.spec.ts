@@ -54,6 +54,7 @@ function madeCase(seed: number): { made: SlowCase; catalogue: SlowCatalogue } {
     catalogue,
     control: {
       mode: random.oneOf(['nearestLevel', 'oneByOne']),
+      stepDelayS: random.oneOf([0, 10, 600]),
       ...(random.next() < 0.3 ? { setPointPowerFactor: 0.97 } : {}),
       ...(random.next() < 0.5 ? { reconnectDelayS: random.oneOf([60, 1500]) } : {}),
     },
@@ -141,6 +142,44 @@ describe('what a plan may not get wrong', () => {
     expect(planned.bank.groups).toEqual([]);
     expect(planned.result.verdict).toBe('watch');
     expect(planned.result.reasons[0]!.code).toBe('layout.noCandidate');
+  });
+
+  it('a smaller bank that is only watched gives way to a larger one that is clear', () => {
+    // 230 A on 1 000 kVA are 16 %: plain stages are watched for it, tuned ones are not.
+    const loads = {
+      distorting: [{ name: 'drives', fundamentalA: 230, orders: [{ orderH: 23, pct: 0.1 }] }],
+      backgroundPct: [],
+    };
+    const among = (reactorPct: number[]) =>
+      planBank(
+        madeSite({ loads, catalogue: { ...catalogue, ratedV: [440, 525], reactorPct } }),
+        steady(100, 75),
+        UTC_TABLE,
+      );
+    const tuned = among([0, 7]);
+    expect(tuned.result.verdict).toBe('clear');
+    expect(tuned.bank.groups.every(({ reactorPct }) => reactorPct === 7)).toBe(true);
+    const plain = among([0]);
+    expect(plain.result.verdict).toBe('watch');
+    expect(plain.result.reasons[0]!.code).toBe('layout.onlyWatch');
+  });
+
+  it('one that would over-correct by more than its smallest stage gives way to one that does not', () => {
+    // 60 kvar come and go, and one stage an interval may be switched: three stages of 20 would leave two behind.
+    const kvar = Array.from({ length: 60 }, (_, i) => (i % 20 < 10 ? 60 : 0));
+    const record = madeRecord({ activeKw: kvar.map(() => 60), reactiveKvar: kvar, intervalS: 600 });
+    const made: SlowCase = {
+      site: madeSite({
+        target: { powerFactor: 0.98 },
+        control: { stepDelayS: 600, setPointPowerFactor: 1 },
+        catalogue: { ...catalogue, stageKvar: [20, 80], ratedV: [440], maxStages: 4 },
+      }),
+      record,
+      zone: UTC_TABLE,
+    };
+    const planned = planBank(made.site, made.record, made.zone);
+    expect(built(planned)).toBe('1×80@440/0');
+    expect(addedLeadingKvar(planned)).toBeLessThanOrEqual(planned.result.bank.effectiveKvar);
   });
 
   it('no need makes an empty bank, clear, with one reason', () => {

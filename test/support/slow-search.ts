@@ -92,6 +92,7 @@ const OPEN_REASONS = [
   'network.unknownLoads',
   'network.unknownBackground',
   'recordedBank.unknown',
+  'supply.weakerThanLoad',
 ];
 
 // The verdict read off the rows again, without inrush where the switches limit it.
@@ -119,22 +120,21 @@ interface Way {
   setPoint: number;
 }
 
+// every entry of the first list with every entry of the second
+function paired<A, B>(some: readonly A[], others: readonly B[]): [A, B][] {
+  return some.flatMap((one) => others.map((other): [A, B] => [one, other]));
+}
+
 function ways(made: SearchCase, catalogue: CatalogueInput): Way[] {
   const lists = stageLists(catalogue.stageKvar!, catalogue.maxStages!);
-  const kinds = catalogue.switches ?? [];
-  const found: Way[] = [];
-  for (const stages of lists.filter((list) => catalogue.evenSteps === false || isEven(list))) {
-    for (const ratedV of catalogue.ratedV!) {
-      for (const reactorPct of catalogue.reactorPct!) {
-        for (let kind = 0; kind < Math.max(1, kinds.length); kind++) {
-          if (kinds[kind] !== undefined && stages[0]! > kinds[kind]!.maxStageKvar) continue;
-          for (const setPoint of setPointsOf(made, catalogue))
-            found.push({ stages, ratedV, reactorPct, kind, setPoint });
-        }
-      }
-    }
-  }
-  return found;
+  const allowed = lists.filter((list) => catalogue.evenSteps === false || isEven(list));
+  const kinds = (catalogue.switches ?? [{ maxStageKvar: Number.POSITIVE_INFINITY }]).entries();
+  const electrical = paired(catalogue.ratedV!, catalogue.reactorPct!);
+  const controlled = paired([...kinds], setPointsOf(made, catalogue));
+  return paired(allowed, paired(electrical, controlled)).flatMap(
+    ([stages, [[ratedV, reactorPct], [[kind, { maxStageKvar }], setPoint]]]) =>
+      stages[0]! > maxStageKvar ? [] : [{ stages, ratedV, reactorPct, kind, setPoint }],
+  );
 }
 
 function assessed({ site, record, zone }: SearchCase, way: Way): Outcome {
@@ -234,7 +234,8 @@ export function slowSearch(made: SearchCase): SlowSearch {
   const kept = keptWorth(made);
   let recommended: SlowSearch['recommended'] | null = nothingOnTarget || !mustMeet ? 'do nothing' : null;
   let worth = 0;
-  if (kept !== null && kept.may && (kept.targetMet || !mustMeet) && (recommended === null || kept.npv > 0.005)) {
+  const mayKeep = kept?.may === true && (kept.targetMet || !mustMeet);
+  if (kept !== null && mayKeep && (recommended === null || kept.npv > 0.005)) {
     recommended = "keep today's bank";
     worth = kept.npv;
   }

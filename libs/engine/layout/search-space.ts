@@ -161,12 +161,14 @@ function stageOf(ratedKvar: number, ratedV: number, reactorPct: number): Bank['g
  * @param space sizes
  * @param build counts, voltage and reactors
  * @param catalogue inductance between stages
+ * @param limitsInrush its switches limit inrush
  * @returns the bank
  */
 export function bankOfBuild(
   space: Pick<SearchSpace, 'stageKvar'>,
   build: Build,
   catalogue: Pick<SettledCatalogue, 'interStageUh' | 'interStageGiven'>,
+  limitsInrush: boolean,
 ): Bank {
   const groups = [...space.stageKvar.entries()]
     .filter(([size]) => build.counts[size]! > 0)
@@ -177,6 +179,7 @@ export function bankOfBuild(
     interStageUh: catalogue.interStageUh,
     interStageGiven: catalogue.interStageGiven,
     ambientCategory: null,
+    ...(limitsInrush ? { limitsInrush } : {}),
   };
 }
 

@@ -1,5 +1,5 @@
 import type { Control } from './control.js';
-import type { ControllerView } from './simulate.js';
+import type { ControllerView } from './controller-view.js';
 
 /** What a reach depends on of a bank, none of whose stages is fixed. */
 export interface ReachedBank {

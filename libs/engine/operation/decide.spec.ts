@@ -1,5 +1,6 @@
 import { describe, expect, it } from 'vitest';
-import { type Decision, nearestLevelInto, oneByOneInto } from './decide.js';
+import { type Decision, oneByOneInto } from './decide.js';
+import { NearestLevel } from './nearest-level.js';
 import type { SwitchedBank } from './switched-bank.js';
 
 // Three stages of 50 and two of 25, largest size first; the threshold is 0.65 of 25, or 16.25 kvar.
@@ -24,7 +25,9 @@ interface State {
 
 type Row = [state: State, chosen: number[], why: string];
 
-function decided(into: typeof nearestLevelInto, bank: SwitchedBank, state: State): number[] {
+const nearestLevelInto = (bank: SwitchedBank, decision: Decision): void => new NearestLevel(bank, decision).choose();
+
+function decided(into: typeof oneByOneInto, bank: SwitchedBank, state: State): number[] {
   const decision: Decision = {
     mostSwitchings: 99,
     voltageScale: 1,

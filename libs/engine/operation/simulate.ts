@@ -1,19 +1,9 @@
 import type { Control } from './control.js';
-import { type Decision, nearestLevelInto, oneByOneInto } from './decide.js';
+import type { ControllerView } from './controller-view.js';
+import { type Decision, oneByOneInto } from './decide.js';
+import { NearestLevel } from './nearest-level.js';
+import { oneSizeInto } from './one-size-into.js';
 import type { SwitchedBank } from './switched-bank.js';
-
-/** What the controller sees, one entry a valid interval, length n. */
-export interface ControllerView {
-  intervalS: number;
-  /** UTC epoch seconds, ascending [s] */
-  beginS: Float64Array;
-  /** Q − P⁺·tan φ_set at the bus [kvar] */
-  wantedKvar: Float64Array;
-  /** (U/U_nom)² where the record has a voltage column, else null */
-  voltageScale: Float64Array | null;
-  /** 1 where a standby supply runs and the bank is held off, else null */
-  standby: Uint8Array | null;
-}
 
 /** The year as switched. */
 export interface SwitchingRun {
@@ -32,14 +22,22 @@ export interface SwitchingRun {
  * @param bank the controller's view of the bank
  * @param control settings
  * @param view what the controller sees, length n
+ * @param connectedKvar receives the connected kvar, length n; new where absent
  * @returns connected kvar per interval and switchings per stage
  * @source method-controller
  */
-export function simulate(bank: SwitchedBank, control: Control, view: ControllerView): SwitchingRun {
+export function simulate(
+  bank: SwitchedBank,
+  control: Control,
+  view: ControllerView,
+  connectedKvar = new Float64Array(view.beginS.length),
+): SwitchingRun {
+  const plain = view.voltageScale === null && view.standby === null;
+  if (plain && bank.classes.length === 1 && control.mode === 'nearestLevel') {
+    return { connectedKvar, ...oneSizeInto(bank, control, view, connectedKvar) };
+  }
   const simulation = new Simulation(bank, control, view);
-  const n = view.beginS.length;
-  const connectedKvar = new Float64Array(n);
-  simulation.runInto(connectedKvar, n);
+  simulation.runInto(connectedKvar, view.beginS.length);
   return { connectedKvar, switchings: simulation.switchings(), connectedIntervals: simulation.connectedIntervals() };
 }
 
@@ -78,7 +76,10 @@ export class Simulation {
     let level = state.levelKvar;
     for (let i = this.#next; i < end; i++) {
       const d = wantedKvar[i]! - level;
-      if (d > band || d < -band) level = state.decide(i, beginS[i]!, wantedKvar[i]!, 1);
+      if (d > band || d < -band) {
+        state.interval = i;
+        level = state.decide(beginS[i]!, wantedKvar[i]!, 1);
+      }
       connectedKvar[i] = level;
     }
   }
@@ -88,10 +89,11 @@ export class Simulation {
     const { wantedKvar, beginS, voltageScale, standby } = this.#view;
     for (let i = this.#next; i < end; i++) {
       const scale = voltageScale === null ? 1 : voltageScale[i]!;
-      if (standby !== null && standby[i] === 1) state.holdOff(i, beginS[i]!);
+      state.interval = i;
+      if (standby !== null && standby[i] === 1) state.holdOff(beginS[i]!);
       else {
         const d = wantedKvar[i]! - state.levelKvar * scale;
-        if (d > state.bandKvar || d < -state.bandKvar) state.decide(i, beginS[i]!, wantedKvar[i]!, scale);
+        if (d > state.bandKvar || d < -state.bandKvar) state.decide(beginS[i]!, wantedKvar[i]!, scale);
       }
       connectedKvar[i] = state.levelKvar;
     }
@@ -113,6 +115,8 @@ class SwitchState {
   readonly switchings: Int32Array;
   readonly bandKvar: number;
   levelKvar: number;
+  /** the interval that is decided */
+  interval = 0;
   readonly #bank: SwitchedBank;
   readonly #control: Control;
   readonly #on: Uint8Array;
@@ -120,16 +124,16 @@ class SwitchState {
   /** interval in which a stage was connected last */
   readonly #onSince: Int32Array;
   readonly #intervalsOn: Float64Array;
+  /** per class, the moment from which every stage that is off is free */
+  readonly #allFreeFromS: Float64Array;
   readonly #decision: Decision;
-  /** no stage waits longer than an interval for its reconnection, so whatever is off is free */
-  readonly #alwaysFree: boolean;
+  readonly #nearest: NearestLevel;
 
   constructor(bank: SwitchedBank, control: Control, intervalS: number) {
     this.#bank = bank;
     this.#control = control;
     this.switchings = new Int32Array(bank.stageCount);
     this.levelKvar = bank.fixedKvar;
-    this.#alwaysFree = control.reconnectDelayS <= intervalS;
     this.bandKvar = bank.classes.length === 0 ? Number.POSITIVE_INFINITY : control.responseRatio * bank.smallestKvar;
     this.#on = new Uint8Array(bank.stageCount);
     this.#offSinceS = new Float64Array(bank.stageCount).fill(Number.NEGATIVE_INFINITY);
@@ -138,6 +142,7 @@ class SwitchState {
     // what is in no size class is never switched, and always in
     this.#on.fill(1);
     for (const { stages } of bank.classes) for (const stage of stages) this.#on[stage] = 0;
+    this.#allFreeFromS = new Float64Array(bank.classes.length).fill(Number.NEGATIVE_INFINITY);
     const perInterval = Math.floor(intervalS / control.stepDelayS);
     this.#decision = {
       connected: new Int32Array(bank.classes.length),
@@ -148,29 +153,30 @@ class SwitchState {
       wantedKvar: 0,
       bandKvar: this.bandKvar,
     };
+    this.#nearest = new NearestLevel(bank, this.#decision);
   }
 
-  // four numbers, not an object: called for every interval that leaves the band
-  decide(interval: number, beginS: number, wantedKvar: number, scale: number): number {
+  decide(beginS: number, wantedKvar: number, scale: number): number {
     const decision = this.#decision;
     decision.wantedKvar = wantedKvar;
     decision.voltageScale = scale;
     this.#countFree(beginS);
-    if (this.#control.mode === 'nearestLevel') nearestLevelInto(this.#bank, decision);
+    if (this.#control.mode === 'nearestLevel') this.#nearest.choose();
     else oneByOneInto(this.#bank, decision);
     for (let c = 0; c < decision.chosen.length; c++) {
-      for (let k = decision.connected[c]!; k < decision.chosen[c]!; k++) this.#connectOne(c, interval, beginS);
-      for (let k = decision.connected[c]!; k > decision.chosen[c]!; k--) this.#disconnectOne(c, interval, beginS);
+      if (decision.chosen[c] === decision.connected[c]) continue;
+      for (let k = decision.connected[c]!; k < decision.chosen[c]!; k++) this.#connectOne(c, beginS);
+      for (let k = decision.connected[c]!; k > decision.chosen[c]!; k--) this.#disconnectOne(c, beginS);
       decision.connected[c] = decision.chosen[c]!;
     }
     return this.#settleLevel();
   }
 
-  holdOff(interval: number, beginS: number): void {
+  holdOff(beginS: number): void {
     const { connected } = this.#decision;
     for (let c = 0; c < connected.length; c++) {
       while (connected[c]! > 0) {
-        this.#disconnectOne(c, interval, beginS);
+        this.#disconnectOne(c, beginS);
         connected[c]!--;
       }
     }
@@ -192,22 +198,24 @@ class SwitchState {
   }
 
   #countFree(beginS: number): void {
-    const delayS = this.#control.reconnectDelayS;
-    for (let c = 0; c < this.#bank.classes.length; c++) {
+    const { free, connected } = this.#decision;
+    for (let c = 0; c < free.length; c++) {
       const { stages } = this.#bank.classes[c]!;
-      if (this.#alwaysFree) {
-        this.#decision.free[c] = stages.length - this.#decision.connected[c]!;
-        continue;
-      }
-      let free = 0;
-      for (let k = 0; k < stages.length; k++) {
-        if (this.#on[stages[k]!] === 0 && beginS >= this.#offSinceS[stages[k]!]! + delayS) free++;
-      }
-      this.#decision.free[c] = free;
+      const allFree = beginS >= this.#allFreeFromS[c]!;
+      free[c] = allFree ? stages.length - connected[c]! : this.#freeStages(stages, beginS);
     }
   }
 
-  #connectOne(c: number, interval: number, beginS: number): void {
+  #freeStages(stages: Int32Array, beginS: number): number {
+    const delayS = this.#control.reconnectDelayS;
+    let free = 0;
+    for (let k = 0; k < stages.length; k++) {
+      if (this.#on[stages[k]!] === 0 && beginS >= this.#offSinceS[stages[k]!]! + delayS) free++;
+    }
+    return free;
+  }
+
+  #connectOne(c: number, beginS: number): void {
     const delayS = this.#control.reconnectDelayS;
     const even = this.#control.wear === 'even';
     const { stages } = this.#bank.classes[c]!;
@@ -219,11 +227,11 @@ class SwitchState {
     }
     if (pick < 0) throw new Error('no free stage to connect');
     this.#on[pick] = 1;
-    this.#onSince[pick] = interval;
+    this.#onSince[pick] = this.interval;
     this.switchings[pick]!++;
   }
 
-  #disconnectOne(c: number, interval: number, beginS: number): void {
+  #disconnectOne(c: number, beginS: number): void {
     const even = this.#control.wear === 'even';
     const { stages } = this.#bank.classes[c]!;
     let pick = -1;
@@ -234,8 +242,9 @@ class SwitchState {
     }
     if (pick < 0) throw new Error('no connected stage to disconnect');
     this.#on[pick] = 0;
+    this.#intervalsOn[pick]! += this.interval - this.#onSince[pick]!;
     this.#offSinceS[pick] = beginS;
-    this.#intervalsOn[pick]! += interval - this.#onSince[pick]!;
+    this.#allFreeFromS[c] = beginS + this.#control.reconnectDelayS;
     this.switchings[pick]!++;
   }
 }

@@ -8,7 +8,7 @@ import { effectiveKvar } from '../layout/stage.js';
 import type { Control } from '../operation/control.js';
 import { meetsTarget } from '../operation/operation.js';
 import { type Remark, Stopped, type Watch } from '../problem.js';
-import { basisOf, judge, overallVerdict } from './outcome-of.js';
+import { basisOf, judge, overallVerdict } from './judge-basis.js';
 import { overCorrectionKvar } from './reasons.js';
 import { settleControl } from './settle-bank.js';
 import type { Site } from './site.js';

@@ -5,6 +5,7 @@ import { CAPACITOR_RULES } from '../duty/rules.js';
 import type { Bank } from '../layout/bank.js';
 import type { Build } from '../layout/search-space.js';
 import { summarizeNetwork } from '../network/network-check.js';
+import { overallVerdict } from './judge-basis.js';
 import type { Study } from './study.js';
 
 /** What closed forms alone say against a clear verdict: a sieve before any network is looked at. */
@@ -12,7 +13,7 @@ export class ClearScreen {
   readonly #study: Study;
   readonly #shortCircuitMva: number;
   readonly #greatestGrowth: number;
-  /** neither an unknown old bank nor unknown loads stand in the way */
+  /** neither the record nor unknown loads leave anything open */
   readonly #known: boolean;
   /** distorting loads are too large for stages without reactors */
   readonly #plainIsWatched: boolean;
@@ -26,7 +27,7 @@ export class ClearScreen {
     this.#study = study;
     this.#shortCircuitMva = summarizeNetwork(model, []).shortCircuitMva;
     this.#greatestGrowth = Math.max(...growth);
-    this.#known = site.recordedBank.state !== 'unknown' && !networkIsUnknown(site.loads);
+    this.#known = overallVerdict(study, { verdict: 'clear' }) === 'clear' && !networkIsUnknown(site.loads);
     const sharePct = ratedKva === 0 ? 0 : (100 * Math.sqrt(3) * site.nominalV * distortingA) / 1000 / ratedKva;
     this.#plainIsWatched = sharePct > PLAIN_SHARE_PCT;
   }
@@ -34,19 +35,16 @@ export class ClearScreen {
   /**
    * False where a build can't be clear, whatever its flows.
    * @param build the build
-   * @param bank makes its bank, where that is needed
-   * @param limitsInrush its switches limit inrush, which is then not judged
+   * @param bank its bank
    * @returns true where nothing speaks against it yet
    * @source method-limits
    */
-  mayBeClear(build: Build, bank: () => Bank, limitsInrush: boolean): boolean {
+  mayBeClear(build: Build, bank: Bank): boolean {
     if (!this.#known || !this.#carriesFundamental(build)) return false;
     if (build.reactorPct === 0 && this.#plainIsWatched) return false;
-    if (limitsInrush) return true;
     const { nominalV, frequencyHz, rules } = this.#study.site;
-    const made = bank();
-    const stages = inrushStages(made, { nominalV, frequencyHz, rules, shortCircuitMva: this.#shortCircuitMva });
-    return stages.every((stage) => inrushDuty(made, stage, rules).every(({ verdict }) => verdict === 'clear'));
+    const stages = inrushStages(bank, { nominalV, frequencyHz, rules, shortCircuitMva: this.#shortCircuitMva });
+    return stages.every((stage) => inrushDuty(bank, stage, rules).every(({ verdict }) => verdict === 'clear'));
   }
 
   // The fundamental voltage alone, in the corner of greatest reactor ratio: a condition that clear voltages need.

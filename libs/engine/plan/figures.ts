@@ -1,4 +1,5 @@
 import type { Bank } from '../layout/bank.js';
+import { strongestInto } from '../network/network-check.js';
 import { neutralA } from '../network/summation.js';
 import { supplyPath } from '../supply/supply-path.js';
 import { bankFigures } from './bank-figures.js';
@@ -88,6 +89,7 @@ function requirementFigures(study: Study, result: Result): Figure[] {
 
 function supplyFigures(study: Study, result: Result): Figure[] {
   const { supply, nominalV } = study.site;
+  if (study.model.nodal !== null) return [nodalFigure(study, result)];
   const ends = [
     {
       id: 'network.shortCircuitMva',
@@ -130,6 +132,22 @@ function supplyFigures(study: Study, result: Result): Figure[] {
       ),
     ];
   });
+}
+
+// In a network of several buses the strongest standing's own impedance; the path alone would give another number.
+function nodalFigure(study: Study, result: Result): Figure {
+  const z = new Float64Array(2);
+  strongestInto(study.model, z);
+  return figure(
+    'network.shortCircuitMva',
+    { value: result.network.shortCircuitMva, unit: 'MVA' },
+    { formula: 'U^2 / √(R^2 + X^2) / 1000', source: 'method, network, the strongest standing' },
+    [
+      ['U', study.site.nominalV, 'V'],
+      ['R', 1000 * z[0]!, 'mΩ'],
+      ['X', 1000 * z[1]!, 'mΩ'],
+    ],
+  );
 }
 
 function parallelOhm(parts: readonly { rOhm: number; xOhm: number }[]): { rOhm: number; xOhm: number } {

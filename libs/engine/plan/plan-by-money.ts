@@ -10,7 +10,8 @@ import { type Remark, remark, type Watch } from '../problem.js';
 import { bestAttainableFactor } from './best-attainable.js';
 import { type MoneyStudy, siteSwitchKind } from './money-study.js';
 import type { Outcome } from './outcome.js';
-import { judge, outcomeOf, overallVerdict } from './outcome-of.js';
+import { judge, overallVerdict } from './judge-basis.js';
+import { outcomeOf } from './outcome-of.js';
 import { bankLines } from './plan-lines.js';
 import { moneyOf, type Priced, priceBank } from './price-bank.js';
 import { type Finished, NEAR_VALUE, search, type SearchAnswer } from './search.js';
@@ -25,7 +26,6 @@ interface Way {
   name: Recommended;
   bank: Bank;
   control: Control;
-  limitsInrush: boolean;
   operated: Operated;
   switchKind: string | null;
   priced: Priced;
@@ -80,7 +80,7 @@ export function planByMoney(study: Study, site: Site, money: MoneyStudy, watch?:
   return outcomeOf('plan', study, {
     bank: chosen.bank,
     control: chosen.control,
-    limitsInrush: chosen.limitsInrush,
+    isOwn: chosen.name === "keep today's bank",
     operated: chosen.operated,
     money: () =>
       moneyOf(money, chosen.priced, {
@@ -112,7 +112,6 @@ function doNothing({ study, site, money }: Asked): Way {
     name: 'do nothing',
     bank,
     control,
-    limitsInrush: false,
     operated,
     switchKind: null,
     priced,
@@ -137,23 +136,23 @@ function keepTodays({ study, site, money }: Asked): Way[] {
   const priced = priceBank(study, money, { bank, operated, switchKind, isNew: false });
   const lines = [...assumptions, ...settled.assumptions];
   const name = "keep today's bank";
-  return [wayOf(study, { name, bank, control, limitsInrush: false, operated, switchKind, priced, assumptions: lines })];
+  return [wayOf(study, { name, bank, control, operated, switchKind, priced, assumptions: lines })];
 }
 
 function newBank({ study, site, money }: Asked, searchJudge: SiteSearchJudge, best: Finished): Way {
   const { bank, control } = best;
   const operated = operate(study, bank, control);
-  const { kind: switchKind, limitsInrush } = searchJudge.kind(best);
+  const switchKind = searchJudge.kind(best).kind;
   const priced = priceBank(study, money, { bank, operated, switchKind, isNew: true });
   const { assumptions } = settleControl(site.control, bank, study.site);
   const replaced = searchJudge.replaces(best);
   const lines = assumptions.filter(({ path }) => path === null || !replaced.includes(path));
-  const own = { name: 'new bank' as const, bank, control, limitsInrush, operated, switchKind, priced };
+  const own = { name: 'new bank' as const, bank, control, operated, switchKind, priced };
   return wayOf(study, { ...own, assumptions: [...bankLines(bank), ...lines] });
 }
 
 function wayOf(study: Study, way: Omit<Way, 'npv' | 'targetMet' | 'verdict' | 'voltageDistortionPct'>): Way {
-  const judgement = judge(study, way.bank, way.control, way.limitsInrush);
+  const judgement = judge(study, way.bank, way.control);
   return {
     ...way,
     npv: way.priced.worth?.npv ?? 0,
@@ -207,7 +206,8 @@ function nonDominated(answer: SearchAnswer, searchJudge: SiteSearchJudge, space:
       totalSwitchings: one.totalSwitchings,
       targetMet: one.targetMet,
       sample: true,
-      ...searchJudge.judged(one),
+      verdict: searchJudge.verdict(one),
+      voltageDistortionPct: searchJudge.voltageDistortionPct(one),
     }))
     .filter(({ verdict }) => verdict !== 'avoid');
 }

@@ -1,17 +1,18 @@
-import { quickJudge } from '../duty/quick-judge.js';
-import { graver, type Verdict } from '../duty/rules.js';
+import type { JudgeBasis } from '../duty/judge-bank.js';
+import { firmVerdict, quickJudge } from '../duty/quick-judge.js';
+import type { Verdict } from '../duty/rules.js';
 import type { Bank } from '../layout/bank.js';
 import type { SettledCatalogue } from '../layout/candidates.js';
 import { bankOfBuild, type SearchSpace, type SwitchKind } from '../layout/search-space.js';
 import type { CostBasis } from '../money/capital.js';
 import { presentWeights } from '../money/present-weights.js';
 import type { Control } from '../operation/control.js';
-import type { ControllerView } from '../operation/simulate.js';
+import type { ControllerView } from '../operation/controller-view.js';
 import { CandidateRun, type RunGround, runColumns } from './candidate-run.js';
 import { BuildWorth, lifeCost, type WorthGround } from './candidate-worth.js';
 import { ClearScreen } from './clear-screen.js';
 import type { MoneyStudy } from './money-study.js';
-import { basisOf, judge, overallVerdict } from './outcome-of.js';
+import { basisOf, judge, overallVerdict } from './judge-basis.js';
 import type { BoundWidth, Candidate, Finished, SearchJudge, SharedBound } from './search.js';
 import { settleControl } from './settle-bank.js';
 import { SharedBounds } from './shared-bounds.js';
@@ -28,12 +29,6 @@ export interface SearchGround {
   space: SearchSpace;
 }
 
-/** A bank judged: its verdict and the greatest voltage distortion of its levels. */
-export interface JudgedBuild {
-  verdict: Verdict;
-  voltageDistortionPct: number;
-}
-
 /** The rest of the engine as a search sees it; whatever is asked twice is kept. */
 export class SiteSearchJudge implements SearchJudge {
   readonly months: number;
@@ -48,8 +43,8 @@ export class SiteSearchJudge implements SearchJudge {
   readonly #worthGround: WorthGround;
   readonly #worths: BuildWorth[] = [];
   readonly #views: ControllerView[] = [];
-  readonly #quick = new Map<string, Verdict>();
-  readonly #judged = new Map<string, JudgedBuild>();
+  readonly #quick = new Map<number, Verdict>();
+  readonly #firm = new Map<number, Verdict>();
 
   /** @param ground what the search is about */
   constructor(ground: SearchGround) {
@@ -105,7 +100,7 @@ export class SiteSearchJudge implements SearchJudge {
    */
   bank(candidate: Candidate): Bank {
     const { space, catalogue } = this.#ground;
-    return bankOfBuild(space, space.builds[candidate.build]!, catalogue);
+    return bankOfBuild(space, space.builds[candidate.build]!, catalogue, this.kind(candidate).limitsInrush);
   }
 
   /**
@@ -172,58 +167,54 @@ export class SiteSearchJudge implements SearchJudge {
   }
 
   mayBeClear(candidate: Candidate): boolean {
-    const { limitsInrush } = this.kind(candidate);
-    const key = 2 * candidate.build + (limitsInrush ? 1 : 0);
+    const key = this.#verdictKey(candidate);
     const known = this.#closedForms[key];
     if (known !== undefined && known !== 0) return known === 1;
-    const may = this.#screen.mayBeClear(
-      this.#ground.space.builds[candidate.build]!,
-      () => this.bank(candidate),
-      limitsInrush,
-    );
+    const build = this.#ground.space.builds[candidate.build]!;
+    const may = this.#screen.mayBeClear(build, this.bank(candidate));
     this.#closedForms[key] = may ? 1 : 2;
     return may;
   }
 
   // Set point and delays don't move a verdict: no discharge resistor is given.
+  #verdictKey(candidate: Candidate): number {
+    return 2 * candidate.build + (this.kind(candidate).limitsInrush ? 1 : 0);
+  }
+
   quickVerdict(candidate: Candidate): Verdict {
-    const { limitsInrush } = this.kind(candidate);
-    const key = `${candidate.build} ${limitsInrush}`;
-    const known = this.#quick.get(key);
-    if (known !== undefined) return known;
-    const { study } = this.#ground;
-    const bank = this.bank(candidate);
-    const basis = { ...basisOf(study, this.control(candidate, bank)), limitsInrush };
-    const { verdict } = quickJudge(study.model, bank, basis);
-    const opened = study.site.recordedBank.state === 'unknown' ? graver(verdict, 'watch') : verdict;
-    this.#quick.set(key, opened);
-    return opened;
+    return this.#kept(this.#quick, candidate, (bank, basis) => quickJudge(this.#ground.study.model, bank, basis));
   }
 
   verdict(candidate: Candidate): Verdict {
-    return this.judged(candidate).verdict;
+    return this.#kept(this.#firm, candidate, (bank, basis) => firmVerdict(this.#ground.study.model, bank, basis));
   }
 
-  /**
-   * A candidate's bank judged in full.
-   * @param candidate the candidate
-   * @returns verdict and greatest voltage distortion
-   * @source method-limits
-   */
-  judged(candidate: Candidate): JudgedBuild {
-    const { limitsInrush } = this.kind(candidate);
-    const key = `${candidate.build} ${limitsInrush}`;
-    const known = this.#judged.get(key);
+  #kept(
+    verdicts: Map<number, Verdict>,
+    candidate: Candidate,
+    judged: (bank: Bank, basis: JudgeBasis) => { verdict: Verdict },
+  ): Verdict {
+    const key = this.#verdictKey(candidate);
+    const known = verdicts.get(key);
     if (known !== undefined) return known;
     const { study } = this.#ground;
     const bank = this.bank(candidate);
-    const judgement = judge(study, bank, this.control(candidate, bank), limitsInrush);
-    const made = {
-      verdict: overallVerdict(study, judgement),
-      voltageDistortionPct: Math.max(...judgement.network.levels.map((level) => level.voltageDistortionPct)),
-    };
-    this.#judged.set(key, made);
+    const made = overallVerdict(study, judged(bank, basisOf(study, this.control(candidate, bank))));
+    verdicts.set(key, made);
     return made;
+  }
+
+  /**
+   * The greatest voltage distortion of a candidate's levels, over all corners.
+   * @param candidate the candidate
+   * @returns of nominal [%]
+   * @source method-network
+   */
+  voltageDistortionPct(candidate: Candidate): number {
+    const { study } = this.#ground;
+    const bank = this.bank(candidate);
+    const { network } = judge(study, bank, this.control(candidate, bank));
+    return Math.max(...network.levels.map((level) => level.voltageDistortionPct));
   }
 
   // Least capital to cents, stages, ΣQ_N, switchings, reactor ratio, voltage, kind's place, set point, list of stages.

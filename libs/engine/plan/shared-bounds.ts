@@ -3,7 +3,7 @@ import { rangeTariff } from '../money/bill-range.js';
 import type { PreparedTariff } from '../money/prepare-tariff.js';
 import type { Control } from '../operation/control.js';
 import { controlReach } from '../operation/control-reach.js';
-import type { ControllerView } from '../operation/simulate.js';
+import type { ControllerView } from '../operation/controller-view.js';
 import { CellBounds, type CellSize } from './bound-cell.js';
 import { boundRest, type WorthGround } from './candidate-worth.js';
 import type { Candidate, SharedBound } from './search.js';

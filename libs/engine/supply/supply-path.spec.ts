@@ -1,9 +1,9 @@
 import { describe, expect, it } from 'vitest';
 import { InputProblem } from '../problem.js';
-import type { Supply, Transformer } from './supply.js';
+import type { SettledTransformer, Supply } from './supply.js';
 import { networkOhm, pathImpedanceInto, shortCircuitMva, supplyPath, transformerOhm } from './supply-path.js';
 
-const transformer: Required<Transformer> = {
+const transformer: SettledTransformer = {
   ratedKva: 1000,
   impedancePct: 5,
   impedanceTolerancePct: 10,

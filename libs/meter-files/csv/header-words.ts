@@ -8,9 +8,9 @@ export const WORDS = {
     'usage consumption consumo consommation verbrauch* load last demand bezug* electricity stromverbrauch',
   lagging: 'lag lagging inductive inductiva inductivo inductif induktiv* ind',
   leading: 'lead leading capacitive capacitiva capacitivo capacitif kapazitiv* cap',
-  imported: 'import imported delivered bezug* soutirage soutiree consumida positive positiv positiva',
+  imported: 'import imported delivered del bezug* soutirage soutiree consumida positive positiv positiva',
   exported:
-    'export exported received einspeis* ruckspeis* lieferung abgabe generation generated injection injectee ' +
+    'export exported received rec einspeis* ruckspeis* lieferung abgabe generation generated injection injectee ' +
     'inyeccion inyectada vertida excedente feed exportada negative negativ negativa',
   bank: 'bank capacitor capacitors kondensator* kompensation* compensation pfc condensateur* condensador* bateria',
   connected: 'connected zugeschaltet* conectada connectee',
@@ -28,11 +28,12 @@ export const WORDS = {
   phase: 'l1 l2 l3 phase1 phase2 phase3',
   time:
     'date datum fecha time zeit* uhrzeit heure hora clock timestamp timestamps datetime stamp horodat* interval ' +
-    'period periode periodo begin beginning start end ending from to von bis ab beginn ende debut fin inicio desde hasta',
+    'period periode periodo begin beginning start end ending from to von bis ab beginn ende intervallbeginn intervallanfang intervallende debut fin inicio desde hasta',
   neutral:
     'total sum avg average mean net gross main site plant all mittel mittelwert moyenne media meter l ll ln kanal channel',
-  begin: 'begin begins beginning start starts starting from von ab beginn anfang debut desde inicio',
-  end: 'end ends ending ende to until till bis fin jusqu* hasta',
+  begin:
+    'begin begins beginning start starts starting from von ab beginn anfang intervallbeginn intervallanfang debut desde inicio',
+  end: 'end ends ending ende to until till bis intervallende fin jusqu* hasta',
 } as const;
 
 export type WordGroup = keyof typeof WORDS;

@@ -182,6 +182,13 @@ describe('delimited text', () => {
     ]);
   });
 
+  it('finds the header by the names that the map gives', async () => {
+    const content = lines('Report,of,invention', 'when,one,two', ...rows(3, (i) => `${i},1`));
+    const map = { columns: { time: 'when', active: 'one', reactive: 'two' }, quantity: 'power' as const };
+    const { record } = await readMeterText(content, { map });
+    expect(Array.from(record.activeKw)).toEqual([0, 1, 2]);
+  });
+
   it('reads a file without a header where the map numbers its columns', async () => {
     const map = { headerRow: 0, columns: { time: 1, active: 2, reactive: 3 }, quantity: 'power' as const };
     const { record } = await readMeterText(lines(...rows(3, (i) => `${i},1`)), { map });
