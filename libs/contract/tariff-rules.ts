@@ -1,3 +1,4 @@
+import { compileFormula, FormulaFault, type ProblemCode } from '#libs/engine/index.js';
 import { listAt, numberAt, partAt, type Readable, type RuleBreach, repeatsIn, textAt } from './rule-breach.js';
 import { shown } from './shown.js';
 import { partitionBreach } from './tariff-partition.js';
@@ -43,7 +44,30 @@ function clauseRules(clause: Readable, windows: unknown[], earlier: (string | un
     ...openEnd(listAt(clause, 'blocks')),
     ...scaleRules(partAt(clause, 'scale')),
     ...partitionBreach(clause, windows),
+    ...formulaBreach(clause, windows),
   ];
+}
+
+const FORMULA_CODES: Record<FormulaFault['kind'], ProblemCode> = {
+  unreadable: 'unreadable',
+  'unknown-name': 'inconsistent',
+  'too-large': 'too-large',
+};
+
+function formulaBreach(clause: Readable, windows: unknown[]): RuleBreach[] {
+  const expression = textAt(clause, 'expression');
+  if (partAt(clause, 'kind') !== 'formula' || expression === undefined) return [];
+  try {
+    compileFormula(
+      expression,
+      windows.flatMap((window) => textAt(window, 'name') ?? []),
+    );
+    return [];
+  } catch (fault) {
+    if (!(fault instanceof FormulaFault)) throw fault;
+    const { kind, expected, found } = fault;
+    return [{ code: FORMULA_CODES[kind], path: ['expression'], expected, found }];
+  }
 }
 
 function namesOfWindows(clause: Readable, windows: unknown[]): RuleBreach[] {

@@ -1,11 +1,11 @@
 import { setTimeout as sleep } from 'node:timers/promises';
+import { afterEach, beforeEach, describe, expect, it, vi } from 'vitest';
 import { InputProblem } from '#libs/engine/index.js';
 import { Job } from '#libs/store/job.js';
 import { claimJob, finishJob, type JobRequest } from '#libs/store/jobs.js';
 import { openStore } from '#libs/store/open-store.js';
 import { insertSite } from '#libs/store/sites.js';
 import type { Store } from '#libs/store/store.js';
-import { afterEach, beforeEach, describe, expect, it, vi } from 'vitest';
 import { databases, type TestDatabase } from '../../test/support/databases.js';
 import { InProcessJobs, type Runner } from './in-process-jobs.js';
 

@@ -1,7 +1,7 @@
 import { readCsv } from './csv/read-csv.js';
 import type { MeterFormat } from './meter-format.js';
-import { readNem12 } from './nem12/read-nem12.js';
 import { isNem12 } from './nem12/nem12-records.js';
+import { readNem12 } from './nem12/read-nem12.js';
 
 /** Every format that is read, in the order in which a file is tried against them; delimited text takes what is left. */
 export const FORMATS: readonly MeterFormat[] = [

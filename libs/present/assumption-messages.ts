@@ -115,5 +115,8 @@ export const ASSUMPTION_MESSAGES: Messages = {
     'The site’s own bank lends nothing to this plan.',
     'Judge it for itself, or say what was connected while the record was taken.',
   ),
-  'money.unused': assumed('Given and not used yet: {name}.', 'Costs and savings are not computed in this edition.'),
+  'money.unused': assumed(
+    'Given and not used: {name}.',
+    'It counts once a tariff, prices and sizes of stages stand beside it.',
+  ),
 };

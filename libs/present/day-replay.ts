@@ -1,6 +1,6 @@
 import {
-  controllerView,
   type Control,
+  controllerView,
   localTime,
   type Outcome,
   type Study,
@@ -100,7 +100,7 @@ function stagesOf(
   stretch: { from: number; to: number },
 ): Uint8Array[] {
   const bank = switchedBank(outcome.bank, outcome.site.nominalV);
-  const all = stagesThrough(bank, control, controllerView(study, control), stretch);
+  const all = stagesThrough(bank, control, controllerView(study, control.setPointPowerFactor), stretch);
   const fixed = outcome.bank.groups.flatMap((group) => Array.from({ length: group.count }, () => group.fixed));
   return Array.from({ length: stretch.to - stretch.from }, (_, i) =>
     all.slice(i * bank.stageCount, (i + 1) * bank.stageCount).map((on, stage) => (fixed[stage] ? 1 : on)),

@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { madeOutcome, MADE_BANK, MADE_PLAIN_BANK } from '../../test/support/outcome.js';
+import { MADE_BANK, MADE_PLAIN_BANK, madeOutcome } from '../../test/support/outcome.js';
 import { dutyBars } from './duty-bars.js';
 
 describe('duties against their limits', () => {

@@ -1,6 +1,7 @@
 import { ASSUMPTION_MESSAGES } from './assumption-messages.js';
 import { CAUTION_MESSAGES } from './caution-messages.js';
 import type { Messages } from './message.js';
+import { MONEY_MESSAGES } from './money-messages.js';
 import { NOTE_MESSAGES } from './note-messages.js';
 import { REASON_MESSAGES } from './reason-messages.js';
 
@@ -10,4 +11,5 @@ export const MESSAGES: Messages = {
   ...ASSUMPTION_MESSAGES,
   ...CAUTION_MESSAGES,
   ...NOTE_MESSAGES,
+  ...MONEY_MESSAGES,
 };

@@ -10,11 +10,14 @@ import { formatNumber, formatQuantity, GAP } from './format-number.js';
 export function proposedWords(outcome: Outcome): string {
   const { bank, result, site } = outcome;
   if (bank.groups.length === 0) {
-    const none = result.reasons.some(({ code }) => code === 'layout.noCandidate');
-    return none ? 'nothing.' : `no bank. The site holds ${formatNumber(site.targetPowerFactor, 'given')} already.`;
+    const said = (code: string): boolean => result.reasons.some((reason) => reason.code === code);
+    if (said('layout.noCandidate')) return 'nothing.';
+    if (said('target.missed')) return 'no bank.';
+    return `no bank. The site holds ${formatNumber(site.targetPowerFactor, 'given')} already.`;
   }
   const stages = bank.groups.reduce((sum, { count }) => sum + count, 0);
-  const own = outcome.kind === 'assess' ? 'the site’s own bank, ' : '';
+  const isOwn = outcome.kind === 'assess' || result.money?.recommended === "keep today's bank";
+  const own = isOwn ? 'the site’s own bank, ' : '';
   const kvar = `${formatQuantity(result.bank.effectiveKvar, 'kvar')} at${GAP}${formatQuantity(site.nominalV, 'V', 'given')}`;
   return `${own}${countWord(stages)} ${stages === 1 ? 'stage' : 'stages'}, ${kvar}, ${reactorWords(bank.groups)}.`;
 }

@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import { UTC_TABLE } from '#libs/engine/index.js';
-import { BEYOND_CELL, GAP_CELL, yearMap, type YearMapParts } from './year-map.js';
+import { BEYOND_CELL, GAP_CELL, type YearMapParts, yearMap } from './year-map.js';
 
 const FIRST_S = Date.UTC(2025, 0, 30) / 1000;
 

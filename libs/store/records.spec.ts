@@ -1,5 +1,5 @@
-import { createLoadRecord, type LoadRecord, type RecordSummary, remark } from '#libs/engine/index.js';
 import { afterEach, beforeEach, describe, expect, it } from 'vitest';
+import { createLoadRecord, type LoadRecord, type RecordSummary, remark } from '#libs/engine/index.js';
 import { databases, type TestDatabase } from '../../test/support/databases.js';
 import { readAddress } from './data-source.js';
 import { openConnections, openStore } from './open-store.js';

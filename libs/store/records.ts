@@ -1,5 +1,5 @@
-import { createLoadRecord, type LoadRecord } from '#libs/engine/index.js';
 import type { EntityManager } from 'typeorm';
+import { createLoadRecord, type LoadRecord } from '#libs/engine/index.js';
 import { type MonthColumn, packRecord, type RequiredColumn } from './pack-record.js';
 import { unpackColumn } from './packed-column.js';
 import { RecordColumn } from './record-column.js';

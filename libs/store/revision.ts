@@ -1,5 +1,5 @@
-import type { Verdict } from '#libs/engine/index.js';
 import { Column, Entity, ForeignKey, Index, PrimaryColumn } from 'typeorm';
+import type { Verdict } from '#libs/engine/index.js';
 import { Col } from './columns.js';
 import { StoredRecord } from './stored-record.js';
 import { StoredSite } from './stored-site.js';

@@ -1,5 +1,5 @@
-import { InputProblem } from '#libs/engine/index.js';
 import type { EntityManager } from 'typeorm';
+import { InputProblem } from '#libs/engine/index.js';
 import { StoredSite } from './stored-site.js';
 
 /** A site that is not there. */

@@ -1,5 +1,5 @@
-import type { RecordSummary } from '#libs/engine/index.js';
 import { Column, Entity, ForeignKey, Index, PrimaryColumn } from 'typeorm';
+import type { RecordSummary } from '#libs/engine/index.js';
 import { Col } from './columns.js';
 import { StoredSite } from './stored-site.js';
 

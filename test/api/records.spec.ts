@@ -1,8 +1,7 @@
 import { createHash } from 'node:crypto';
-import { readdirSync } from 'node:fs';
-import { join } from 'node:path';
-import { mkdtempSync, rmSync } from 'node:fs';
+import { mkdtempSync, readdirSync, rmSync } from 'node:fs';
 import { tmpdir } from 'node:os';
+import { join } from 'node:path';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { recordBytes } from '#libs/contract/record-hash.js';
 import { readMeterFile } from '#libs/meter-files/read-meter-file.js';

@@ -1,5 +1,5 @@
-import { Controller, Get } from '@nestjs/common';
 import { connect } from 'node:net';
+import { Controller, Get } from '@nestjs/common';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { databases, type TestDatabase } from '../support/databases.js';
 import { startServer, type TestServer } from '../support/test-server.js';

@@ -3,7 +3,7 @@
 // - 1 500 kVA, 6 %, 500 kvar, order 7.07 and rise 2.0 %: Dugan and others, Electrical Power Systems Quality; from memory.
 // - Between the 3rd and the 5th, order √15 = 3.873, ratio 0.067: electrical-engineering-portal.com; seen.
 import { describe, expect, it } from 'vitest';
-import { assessBank, primaryFromBus, scanSite, type Site, tunedOrderH, UTC_TABLE } from '#libs/engine/index.js';
+import { assessBank, primaryFromBus, type Site, scanSite, tunedOrderH, UTC_TABLE } from '#libs/engine/index.js';
 import { madeRecord } from '../support/made-record.js';
 import { madeSite } from '../support/made-site.js';
 

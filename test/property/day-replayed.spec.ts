@@ -1,7 +1,7 @@
 // The stages of a replayed day against the year as simulated: two readings of one switching history.
 import { describe, expect, it } from 'vitest';
-import { assessBank, studySite } from '#libs/engine/index.js';
 import { zoneTable } from '#libs/contract/time-zone.js';
+import { assessBank, studySite } from '#libs/engine/index.js';
 import { dayReplay } from '#libs/present/day-replay.js';
 import { madeRecord, madeSite } from '../support/outcome.js';
 

@@ -2,8 +2,8 @@
 import { describe, expect, it } from 'vitest';
 import { type Control, simulate, switchedBank } from '#libs/engine/index.js';
 import { chance } from '../support/chance.js';
-import { FIRST_S } from '../support/made-record.js';
 import { madeBank, madeGroup } from '../support/made-network.js';
+import { FIRST_S } from '../support/made-record.js';
 import { runs, SEED } from '../support/soak.js';
 
 const seeds = (usual: number, soaked: number): number[] =>

@@ -1,6 +1,6 @@
+import type { Result } from '#libs/engine/index.js';
 import { formatNumber, formatQuantity } from '#libs/present/format-number.js';
 import { formatMonth } from '#libs/present/local-stamp.js';
-import type { Result } from '#libs/engine/index.js';
 import { bankOf } from '../desk/desk-state.js';
 import { useDesk } from '../desk/use-desk.js';
 import { Bars } from '../draw/bars.js';
@@ -9,8 +9,8 @@ import { latestResult } from '../line/latest-result.js';
 import { NoRecord } from '../record/no-record.js';
 import { Headline } from '../working/headline.js';
 import { ControlFields } from './control-fields.js';
-import { ReplayFigure } from './replay-figure.js';
 import { RatioTable } from './ratio-table.js';
+import { ReplayFigure } from './replay-figure.js';
 import { StageFields } from './stage-fields.js';
 import { StagesFigure } from './stages-figure.js';
 

@@ -1,6 +1,6 @@
 import type { DayReplay } from '#libs/present/day-replay.js';
-import { formatClock } from '#libs/present/local-stamp.js';
 import { formatNumber } from '#libs/present/format-number.js';
+import { formatClock } from '#libs/present/local-stamp.js';
 import { linearAxis, placeOnAxis } from '#libs/present/ticks.js';
 import { useDesk } from '../desk/use-desk.js';
 import { ChartFigure } from '../draw/chart-figure.js';

@@ -1,11 +1,11 @@
 import { type PointerEvent, useRef, useState } from 'react';
 import type { BankInput } from '#libs/engine/index.js';
-import type { Figured } from '../draw/chart-figure.js';
-import { ChartFigure } from '../draw/chart-figure.js';
-import { usePlotWidth } from '../draw/plot-size.js';
 import { formatNumber, formatQuantity } from '#libs/present/format-number.js';
 import { bankOf } from '../desk/desk-state.js';
 import { useDesk } from '../desk/use-desk.js';
+import type { Figured } from '../draw/chart-figure.js';
+import { ChartFigure } from '../draw/chart-figure.js';
+import { usePlotWidth } from '../draw/plot-size.js';
 import { latestResult } from '../line/latest-result.js';
 import { stagesOf, withStageAdded, withStageMoved, withStageRemoved } from './stage-edits.js';
 

@@ -14,7 +14,7 @@ import { powerFactorByMonth } from '#libs/present/power-factor-by-month.js';
 import { bankName } from '#libs/present/proposed-words.js';
 import { bothRatings, singleLine } from '#libs/present/single-line.js';
 import { stageSwitchings } from '#libs/present/stage-switchings.js';
-import { targetCurve, type TargetSweep } from '#libs/present/target-curve.js';
+import { type TargetSweep, targetCurve } from '#libs/present/target-curve.js';
 import { placeOnAxis } from '#libs/present/ticks.js';
 import { yearMap } from '#libs/present/year-map.js';
 import type { Station } from '../address.js';

@@ -1,12 +1,12 @@
 import type { ReactNode } from 'react';
-import { siteAddress, type Station, STATIONS, stationOfPath } from '../address.js';
+import { formatNumber } from '#libs/present/format-number.js';
+import { verdictWords } from '#libs/present/verdict-words.js';
+import { STATIONS, type Station, siteAddress, stationOfPath } from '../address.js';
 import { bankOf, type DeskState, staleFrom } from '../desk/desk-state.js';
 import { useDesk } from '../desk/use-desk.js';
-import { Mark } from '../draw/verdict-mark.js';
 import { Quantity } from '../draw/quantity.js';
+import { Mark } from '../draw/verdict-mark.js';
 import { latestResult } from './latest-result.js';
-import { verdictWords } from '#libs/present/verdict-words.js';
-import { formatNumber } from '#libs/present/format-number.js';
 
 const WORDS: Record<Station, string> = {
   record: 'Record',

@@ -1,4 +1,4 @@
-import { useAddress, siteAddress } from '../address.js';
+import { siteAddress, useAddress } from '../address.js';
 
 /** A station without a record: what is missing, and the way on. */
 export function NoRecord({ what }: { what: string }) {

@@ -2,9 +2,9 @@ import { useEffect, useRef, useState } from 'react';
 import type { Trace } from '../desk/look.js';
 import { useDesk } from '../desk/use-desk.js';
 import { usePlotWidth } from '../draw/plot-size.js';
+import { useTheme } from '../theme.js';
 import { drawTrace, type TraceView } from './draw-trace.js';
 import { TracePyramid } from './trace-pyramid.js';
-import { useTheme } from '../theme.js';
 
 const HEIGHT = 240;
 

@@ -1,5 +1,5 @@
-import { readTyped } from '../field/read-typed.js';
 import { withValueAt } from '../field/document-path.js';
+import { readTyped } from '../field/read-typed.js';
 
 /** A field of the form for a blank site. */
 export interface BlankField {

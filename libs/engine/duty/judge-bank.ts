@@ -157,6 +157,7 @@ function exactInrushes(model: NetworkModel, bank: Bank, levels: Level[], basis: 
  * @source method-inrush
  */
 export function closingDuties(model: NetworkModel, bank: Bank, levels: Level[], basis: JudgeBasis): Duty[] {
+  if (bank.limitsInrush === true) return [];
   const closed = inrushStages(bank, {
     nominalV: basis.voltages.nominalV,
     frequencyHz: basis.frequencyHz,
@@ -192,7 +193,7 @@ function inrushRow(
   { name, peakA, singleA, rules }: { name: string; peakA: number; singleA: number; rules: RuleSet },
 ): Duty[] {
   const limitA = inrush.limitPeakA;
-  if (limitA === null) return [];
+  if (limitA === null || bank.limitsInrush === true) return [];
   const source = bank.groups[inrush.group]!.switchPeakA === limitA ? 'site' : CAPACITOR_RULES[rules].source;
   const row = new DutyRow({ name, group: inrush.group, unit: 'A', source, nearRatio: NEAR_RATIO.other });
   row.take(peakA, limitA, { levelKvar: null, corner: null, orderH: null });

@@ -90,4 +90,6 @@ export interface Bank {
   /** false where `interStageUh` is the customary value */
   interStageGiven: boolean;
   ambientCategory: 'A' | 'B' | 'C' | 'D' | null;
+  /** its switches limit inrush, which is then not judged */
+  limitsInrush?: boolean;
 }

@@ -30,7 +30,27 @@ export function meterAfter(record: LoadRecord, load: BusLoad, connectedKvar: Flo
     laggingKvar: new Float64Array(n),
     leadingKvar: new Float64Array(n),
   };
-  for (let i = 0; i < n; i++) {
+  meterAfterInto(after, { record, load, connectedKvar }, 0, n);
+  return after;
+}
+
+/**
+ * The meter's columns after the bank, for some of the intervals.
+ * @param after receives them, each at its own place, length n
+ * @param given record, load and connected kvar, each of length n
+ * @param from first interval
+ * @param end the interval to stop before
+ * @throws InputProblem where the transformers can't carry an interval
+ * @source method-requirement
+ */
+export function meterAfterInto(
+  after: MeterAfter,
+  given: { record: LoadRecord; load: BusLoad; connectedKvar: Float64Array },
+  from: number,
+  end: number,
+): void {
+  const { record, load, connectedKvar } = given;
+  for (let i = from; i < end; i++) {
     const lagging = record.laggingKvar[i]!;
     const leading = record.leadingKvar[i]!;
     let activeKw = record.activeKw[i]!;
@@ -51,5 +71,4 @@ export function meterAfter(record: LoadRecord, load: BusLoad, connectedKvar: Flo
       after.laggingKvar[i] = lagging + Math.max(-fall - leading, 0);
     }
   }
-  return after;
 }

@@ -10,6 +10,10 @@ interface OneSize {
   stages: Int32Array;
   on: Uint8Array;
   offSinceS: Float64Array;
+  /** interval in which a stage was connected last */
+  onSince: Int32Array;
+  /** intervals a stage was connected in, up to its last disconnection */
+  intervalsOn: Float64Array;
   switchings: Int32Array;
   delayS: number;
   even: boolean;
@@ -22,7 +26,7 @@ interface OneSize {
  * @param control settings, mode `nearestLevel`
  * @param view what the controller sees, length n
  * @param connectedKvar receives the connected kvar, length n
- * @returns switchings per physical stage
+ * @returns switchings of each physical stage, and the intervals it was connected in
  * @source method-controller
  */
 // biome-ignore lint/complexity/noExcessiveCognitiveComplexity: a kernel; its state stays in locals
@@ -31,17 +35,21 @@ export function oneSizeInto(
   control: Control,
   view: ControllerView,
   connectedKvar: Float64Array,
-): Int32Array {
+): { switchings: Int32Array; connectedIntervals: Float64Array } {
   const { wantedKvar, beginS, intervalS } = view;
   const { kvar, stages } = bank.classes[0]!;
   const size: OneSize = {
     stages,
-    on: new Uint8Array(bank.stageCount),
+    // what is in no size class is never switched, and always in
+    on: new Uint8Array(bank.stageCount).fill(1),
+    onSince: new Int32Array(bank.stageCount),
+    intervalsOn: new Float64Array(bank.stageCount),
     offSinceS: new Float64Array(bank.stageCount).fill(Number.NEGATIVE_INFINITY),
     switchings: new Int32Array(bank.stageCount),
     delayS: control.reconnectDelayS,
     even: control.wear === 'even',
   };
+  for (const stage of stages) size.on[stage] = 0;
   const fixedKvar = bank.fixedKvar;
   const band = control.responseRatio * kvar;
   const tolerance = COMPARISON_SHARE * kvar;
@@ -67,14 +75,18 @@ export function oneSizeInto(
         if (nearer < -tolerance || (nearer <= tolerance && count > next)) next++;
       }
       if (next < count) allFreeFromS = begin + size.delayS;
-      for (let k = count; k < next; k++) connectOne(size, begin);
-      for (let k = count; k > next; k--) disconnectOne(size, begin);
+      for (let k = count; k < next; k++) connectOne(size, begin, i);
+      for (let k = count; k > next; k--) disconnectOne(size, begin, i);
       count = next;
       level = fixedKvar + count * kvar;
     }
     connectedKvar[i] = level;
   }
-  return size.switchings;
+  const { switchings, on, onSince } = size;
+  const connectedIntervals = size.intervalsOn.map((intervals, stage) =>
+    on[stage] === 1 ? intervals + n - onSince[stage]! : intervals,
+  );
+  return { switchings, connectedIntervals };
 }
 
 function freeStages({ stages, on, offSinceS, delayS }: OneSize, beginS: number): number {
@@ -85,7 +97,8 @@ function freeStages({ stages, on, offSinceS, delayS }: OneSize, beginS: number):
   return free;
 }
 
-function connectOne({ stages, on, offSinceS, switchings, delayS, even }: OneSize, beginS: number): void {
+function connectOne(size: OneSize, beginS: number, interval: number): void {
+  const { stages, on, offSinceS, switchings, delayS, even } = size;
   let pick = -1;
   for (let k = 0; k < stages.length; k++) {
     const stage = stages[k]!;
@@ -93,10 +106,12 @@ function connectOne({ stages, on, offSinceS, switchings, delayS, even }: OneSize
     if (pick < 0 || (even && switchings[stage]! < switchings[pick]!)) pick = stage;
   }
   on[pick] = 1;
+  size.onSince[pick] = interval;
   switchings[pick]!++;
 }
 
-function disconnectOne({ stages, on, offSinceS, switchings, even }: OneSize, beginS: number): void {
+function disconnectOne(size: OneSize, beginS: number, interval: number): void {
+  const { stages, on, offSinceS, switchings, even } = size;
   let pick = -1;
   for (let k = 0; k < stages.length; k++) {
     const stage = stages[k]!;
@@ -104,6 +119,7 @@ function disconnectOne({ stages, on, offSinceS, switchings, even }: OneSize, beg
     if (pick < 0 || !even || switchings[stage]! > switchings[pick]!) pick = stage;
   }
   on[pick] = 0;
+  size.intervalsOn[pick]! += interval - size.onSince[pick]!;
   offSinceS[pick] = beginS;
   switchings[pick]!++;
 }

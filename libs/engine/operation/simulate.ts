@@ -5,12 +5,14 @@ import { NearestLevel } from './nearest-level.js';
 import { oneSizeInto } from './one-size-into.js';
 import type { SwitchedBank } from './switched-bank.js';
 
-/** The year as switched; length n but for `switchings`. */
+/** The year as switched. */
 export interface SwitchingRun {
-  /** effective kvar connected, at nominal voltage [kvar] */
+  /** effective kvar connected, at nominal voltage, length n [kvar] */
   connectedKvar: Float64Array;
   /** one entry a physical stage */
   switchings: Int32Array;
+  /** valid intervals each physical stage was connected in */
+  connectedIntervals: Float64Array;
 }
 
 /**
@@ -32,12 +34,11 @@ export function simulate(
 ): SwitchingRun {
   const plain = view.voltageScale === null && view.standby === null;
   if (plain && bank.classes.length === 1 && control.mode === 'nearestLevel') {
-    return { connectedKvar, switchings: oneSizeInto(bank, control, view, connectedKvar) };
+    return { connectedKvar, ...oneSizeInto(bank, control, view, connectedKvar) };
   }
-  const state = new SwitchState(bank, control, view.intervalS);
-  if (plain) runPlainInto(state, view, connectedKvar);
-  else runFullInto(state, view, connectedKvar);
-  return { connectedKvar, switchings: state.switchings };
+  const simulation = new Simulation(bank, control, view);
+  simulation.runInto(connectedKvar, view.beginS.length);
+  return { connectedKvar, switchings: simulation.switchings(), connectedIntervals: simulation.connectedIntervals() };
 }
 
 /**
@@ -69,29 +70,72 @@ export function stagesThrough(
   return stagesIn;
 }
 
-// The common interval is two compares: everything else is in the state's own functions.
-function runPlainInto(state: SwitchState, view: ControllerView, connectedKvar: Float64Array): void {
-  const { wantedKvar, beginS } = view;
-  const n = wantedKvar.length;
-  const band = state.bandKvar;
-  let level = state.levelKvar;
-  for (let i = 0; i < n; i++) {
-    const d = wantedKvar[i]! - level;
-    if (d > band || d < -band) level = state.decide(beginS[i]!, wantedKvar[i]!, 1);
-    connectedKvar[i] = level;
-  }
-}
+/** A controller at work that can be stopped between two intervals and go on later. */
+export class Simulation {
+  readonly #state: SwitchState;
+  readonly #view: ControllerView;
+  #next = 0;
 
-function runFullInto(state: SwitchState, view: ControllerView, connectedKvar: Float64Array): void {
-  const { wantedKvar, beginS, voltageScale, standby } = view;
-  for (let i = 0; i < wantedKvar.length; i++) {
-    const scale = voltageScale === null ? 1 : voltageScale[i]!;
-    if (standby !== null && standby[i] === 1) state.holdOff(beginS[i]!);
-    else {
-      const d = wantedKvar[i]! - state.levelKvar * scale;
-      if (d > state.bandKvar || d < -state.bandKvar) state.decide(beginS[i]!, wantedKvar[i]!, scale);
+  /**
+   * @param bank the controller's view of the bank
+   * @param control settings
+   * @param view what the controller sees, length n
+   */
+  constructor(bank: SwitchedBank, control: Control, view: ControllerView) {
+    this.#state = new SwitchState(bank, control, view.intervalS);
+    this.#view = view;
+  }
+
+  /**
+   * Goes on to an interval.
+   * @param connectedKvar receives the connected kvar of the intervals passed, each at its own place, length n [kvar]
+   * @param end the interval to stop before
+   */
+  runInto(connectedKvar: Float64Array, end: number): void {
+    if (this.#view.voltageScale === null && this.#view.standby === null) this.#runPlainInto(connectedKvar, end);
+    else this.#runFullInto(connectedKvar, end);
+    this.#next = end;
+  }
+
+  // The common interval is two compares: everything else is in the state's own functions.
+  #runPlainInto(connectedKvar: Float64Array, end: number): void {
+    const state = this.#state;
+    const { wantedKvar, beginS } = this.#view;
+    const band = state.bandKvar;
+    let level = state.levelKvar;
+    for (let i = this.#next; i < end; i++) {
+      const d = wantedKvar[i]! - level;
+      if (d > band || d < -band) {
+        state.interval = i;
+        level = state.decide(beginS[i]!, wantedKvar[i]!, 1);
+      }
+      connectedKvar[i] = level;
     }
-    connectedKvar[i] = state.levelKvar;
+  }
+
+  #runFullInto(connectedKvar: Float64Array, end: number): void {
+    const state = this.#state;
+    const { wantedKvar, beginS, voltageScale, standby } = this.#view;
+    for (let i = this.#next; i < end; i++) {
+      const scale = voltageScale === null ? 1 : voltageScale[i]!;
+      state.interval = i;
+      if (standby !== null && standby[i] === 1) state.holdOff(beginS[i]!);
+      else {
+        const d = wantedKvar[i]! - state.levelKvar * scale;
+        if (d > state.bandKvar || d < -state.bandKvar) state.decide(beginS[i]!, wantedKvar[i]!, scale);
+      }
+      connectedKvar[i] = state.levelKvar;
+    }
+  }
+
+  /** @returns switchings so far, one entry a physical stage */
+  switchings(): Int32Array {
+    return this.#state.switchings.slice();
+  }
+
+  /** @returns valid intervals so far in which each physical stage was connected */
+  connectedIntervals(): Float64Array {
+    return this.#state.connectedIntervals(this.#next);
   }
 }
 
@@ -100,10 +144,15 @@ class SwitchState {
   readonly switchings: Int32Array;
   readonly bandKvar: number;
   levelKvar: number;
+  /** the interval that is decided */
+  interval = 0;
   readonly #bank: SwitchedBank;
   readonly #control: Control;
   readonly #on: Uint8Array;
   readonly #offSinceS: Float64Array;
+  /** interval in which a stage was connected last */
+  readonly #onSince: Int32Array;
+  readonly #intervalsOn: Float64Array;
   /** per class, the moment from which every stage that is off is free */
   readonly #allFreeFromS: Float64Array;
   readonly #decision: Decision;
@@ -117,6 +166,11 @@ class SwitchState {
     this.bandKvar = bank.classes.length === 0 ? Number.POSITIVE_INFINITY : control.responseRatio * bank.smallestKvar;
     this.#on = new Uint8Array(bank.stageCount);
     this.#offSinceS = new Float64Array(bank.stageCount).fill(Number.NEGATIVE_INFINITY);
+    this.#onSince = new Int32Array(bank.stageCount);
+    this.#intervalsOn = new Float64Array(bank.stageCount);
+    // what is in no size class is never switched, and always in
+    this.#on.fill(1);
+    for (const { stages } of bank.classes) for (const stage of stages) this.#on[stage] = 0;
     this.#allFreeFromS = new Float64Array(bank.classes.length).fill(Number.NEGATIVE_INFINITY);
     const perInterval = Math.floor(intervalS / control.stepDelayS);
     this.#decision = {
@@ -162,6 +216,12 @@ class SwitchState {
     this.#settleLevel();
   }
 
+  connectedIntervals(end: number): Float64Array {
+    return this.#intervalsOn.map((intervals, stage) =>
+      this.#on[stage] === 1 ? intervals + end - this.#onSince[stage]! : intervals,
+    );
+  }
+
   #settleLevel(): number {
     const { connected } = this.#decision;
     let level = this.#bank.fixedKvar;
@@ -200,6 +260,7 @@ class SwitchState {
     }
     if (pick < 0) throw new Error('no free stage to connect');
     this.#on[pick] = 1;
+    this.#onSince[pick] = this.interval;
     this.switchings[pick]!++;
   }
 
@@ -214,6 +275,7 @@ class SwitchState {
     }
     if (pick < 0) throw new Error('no connected stage to disconnect');
     this.#on[pick] = 0;
+    this.#intervalsOn[pick]! += this.interval - this.#onSince[pick]!;
     this.#offSinceS[pick] = beginS;
     this.#allFreeFromS[c] = beginS + this.#control.reconnectDelayS;
     this.switchings[pick]!++;

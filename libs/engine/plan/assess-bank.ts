@@ -1,14 +1,16 @@
-import { InputProblem, remark, type Watch } from '../problem.js';
+import { InputProblem, type Watch } from '../problem.js';
 import type { LoadRecord } from '../record/load-record.js';
 import type { ZoneTable } from '../record/zone-table.js';
+import { moneyStudy } from './money-study.js';
 import type { Outcome } from './outcome.js';
 import { outcomeOf } from './outcome-of.js';
+import { newMoney, unusedPapers } from './price-bank.js';
 import { settleBank, settleControl } from './settle-bank.js';
 import type { Site } from './site.js';
 import { studySite } from './study.js';
 
 /**
- * Judges the site's own bank against the record.
+ * Judges the site's own bank against the record, and prices it as new where the site gives a tariff.
  * @param site validated site with a `bank`
  * @param record the meter's record
  * @param zone the site's zone over the record
@@ -25,21 +27,16 @@ export function assessBank(site: Site, record: LoadRecord, zone: ZoneTable, watc
   watch?.report(0.3);
   const { bank, assumptions, findings } = settleBank(site.bank, site.frequencyHz);
   const settled = settleControl(site.control, bank, study.site);
-  const unused = unusedPapers(site).map((name) => remark('money.unused', { name }, { path: name }));
+  const money = moneyStudy(study, site);
   const outcome = outcomeOf('assess', study, {
     bank,
     control: settled.control,
-    said: { reasons: findings, assumptions: [...assumptions, ...settled.assumptions, ...unused] },
+    said: {
+      reasons: findings,
+      assumptions: [...assumptions, ...settled.assumptions, ...unusedPapers(site), ...(money?.assumptions ?? [])],
+    },
+    money: newMoney(study, site, money, bank),
   });
   watch?.report(1);
   return outcome;
-}
-
-/**
- * Parts of the site file that are validated and not used yet.
- * @param site validated site
- * @returns their keys
- */
-export function unusedPapers(site: Site): string[] {
-  return (['tariff', 'prices', 'finance'] as const).filter((key) => site[key] !== undefined);
 }

@@ -7,6 +7,7 @@ import { type MeasuredCheck, measuredCheck } from '../duty/measured-check.js';
 import { CAPACITOR_RULES, graver, type Verdict } from '../duty/rules.js';
 import type { Bank } from '../layout/bank.js';
 import { bankLevels, summarizeBank } from '../layout/levels.js';
+import type { Money } from '../money/money-result.js';
 import type { MeasuredDistortion } from '../network/loads.js';
 import type { Control } from '../operation/control.js';
 import { summarizeOperation } from '../operation/operation.js';
@@ -32,6 +33,19 @@ export interface Said {
   atBest?: Verdict;
 }
 
+/** A bank and its controller, and what led to them. */
+export interface Choice {
+  bank: Bank;
+  control: Control;
+  said: Said;
+  /** a plan that keeps the site's own bank */
+  isOwn?: boolean;
+  /** the bank simulated, where that has been done */
+  operated?: Operated;
+  /** what it costs and saves, from the bank simulated */
+  money?: (operated: Operated) => Money;
+}
+
 /**
  * Judges one bank on one study and composes the outcome.
  * @param kind which command asked
@@ -40,20 +54,21 @@ export interface Said {
  * @returns the outcome
  * @source method-limits
  */
-export function outcomeOf(
-  kind: Outcome['kind'],
-  study: Study,
-  choice: { bank: Bank; control: Control; said: Said },
-): Outcome {
+export function outcomeOf(kind: Outcome['kind'], study: Study, choice: Choice): Outcome {
   const { bank, control, said } = choice;
   const levels = bankLevels(bank, study.site.nominalV);
-  const operated = operate(study, bank, control);
+  const operated = choice.operated ?? operate(study, bank, control);
   const judgement = judge(study, bank, control);
   const bankSummary = summarizeBank(bank, levels, study.site.nominalV);
   const conductorMinA =
     (CAPACITOR_RULES[study.site.rules].conductorRatio * bankSummary.effectiveKvar * 1000) /
     (Math.sqrt(3) * study.site.nominalV);
-  const { beside, equipment } = besideOf(kind, study, { bank, control, judgement, conductorMinA });
+  const { beside, equipment } = besideOf(choice.isOwn === true ? 'assess' : kind, study, {
+    bank,
+    control,
+    judgement,
+    conductorMinA,
+  });
   const result: Result = {
     record: study.recordSummary,
     requirement: study.requirement,
@@ -68,7 +83,7 @@ export function outcomeOf(
     ...beside,
     robustness: null,
     reactorTrials: [],
-    money: null,
+    money: choice.money?.(operated) ?? null,
     verdict: graver(graver(overallVerdict(study, judgement), said.atBest ?? 'clear'), verdictBeside(beside)),
     reasons: [
       ...said.reasons,
@@ -98,7 +113,7 @@ export function outcomeOf(
     series: series(study, operated),
     loadA: study.model.loadA,
     margins: marginMap(study.model, bank, levels, basisOf(study, control)),
-    rival: rivalOf(study, bank, control, result.verdict),
+    rival: rivalOf(study, choice, result.verdict),
   };
 }
 
@@ -144,7 +159,7 @@ function series(study: Study, operated: Operated): Outcome['series'] {
 }
 
 // The same nameplates built the other way: shown beside the bank wherever one of the two is near or over a limit.
-function rivalOf(study: Study, bank: Bank, control: Control, verdict: Verdict): Rival | null {
+function rivalOf(study: Study, { bank, control }: Choice, verdict: Verdict): Rival | null {
   const detuned = bank.groups.some((group) => group.reactorPct > 0);
   if (bank.groups.length === 0 || (!detuned && verdict === 'clear')) return null;
   const groups = bank.groups.map((group) => ({ ...group, reactorPct: detuned ? 0 : RIVAL_REACTOR_PCT }));

@@ -7,6 +7,7 @@ import type { LimitsPoint } from '../duty/limits-point.js';
 import type { MeasuredCheck } from '../duty/measured-check.js';
 import type { Verdict } from '../duty/rules.js';
 import type { BankSummary } from '../layout/levels.js';
+import type { Money } from '../money/money-result.js';
 import type { NetworkSummary } from '../network/network-check.js';
 import type { Control } from '../operation/control.js';
 import type { OperationSummary } from '../operation/operation.js';
@@ -41,7 +42,8 @@ export interface Result {
   robustness: Robustness | null;
   /** the bank's stages with the customary reactor ratios; empty where its groups differ in theirs, and until asked for */
   reactorTrials: ReactorTrial[];
-  money: null;
+  /** null without a tariff */
+  money: Money | null;
   verdict: Verdict;
   reasons: Remark[];
   assumptions: Remark[];

@@ -103,7 +103,8 @@ export interface Operated extends Simulated {
  */
 export function operate(study: Study, bank: Bank, control: Control): Operated {
   const { record, load } = study;
-  const run = simulate(switchedBank(bank, study.site.nominalV), control, controllerView(study, control));
+  const view = controllerView(study, control.setPointPowerFactor);
+  const run = simulate(switchedBank(bank, study.site.nominalV), control, view);
   const deliveredKvar = atVoltage(run.connectedKvar, study.voltageScale);
   const meter = meterAfter(record, load, deliveredKvar);
   return {
@@ -119,20 +120,21 @@ export function operate(study: Study, bank: Bank, control: Control): Operated {
 }
 
 /**
- * What the controller sees of the record.
+ * What a controller sees of the record at a set point: wanted = Q − P⁺·tan φ_set at the bus.
  * @param study site and record
- * @param control settings; the set point decides what is wanted
+ * @param setPointPowerFactor λ steered towards
  * @returns columns of length n
  * @source method-controller
  */
-export function controllerView(study: Study, control: Control): ControllerView {
+export function controllerView(study: Study, setPointPowerFactor: number): ControllerView {
   const { record, load } = study;
-  const tanSet = tanFromPowerFactor(control.setPointPowerFactor);
+  const tanSet = tanFromPowerFactor(setPointPowerFactor);
   const wantedKvar = new Float64Array(record.beginS.length);
   for (let i = 0; i < wantedKvar.length; i++) {
     wantedKvar[i] = load.reactiveKvar[i]! - targetKw(load.activeKw[i]!, study.target.onExport) * tanSet;
   }
-  return { ...record, wantedKvar, voltageScale: study.voltageScale };
+  const { intervalS, beginS, standby } = record;
+  return { intervalS, beginS, wantedKvar, voltageScale: study.voltageScale, standby };
 }
 
 /**

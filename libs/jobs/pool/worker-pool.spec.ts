@@ -2,11 +2,11 @@ import { mkdtempSync, rmSync, writeFileSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import { pathToFileURL } from 'node:url';
-import { InputProblem } from '#libs/engine/index.js';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
-import { WorkerPool } from './worker-pool.js';
-import { packAnswer } from './worker-answer.js';
+import { InputProblem } from '#libs/engine/index.js';
 import { portWatch } from './port-watch.js';
+import { packAnswer } from './worker-answer.js';
+import { WorkerPool } from './worker-pool.js';
 
 const WORKER = `
 export const twice = ({ task }) => ({ value: task * 2 });

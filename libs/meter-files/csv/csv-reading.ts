@@ -1,17 +1,17 @@
 import type { MeterMap } from '#libs/contract/meter-map.js';
+import { zoneTable } from '#libs/contract/time-zone.js';
 import { InputProblem, type Remark } from '#libs/engine/index.js';
 import type { ReadOptions } from '../meter-format.js';
 import { note } from '../note.js';
+import { type BuiltColumns, buildColumns, QUANTITIES, type QuantitySource } from '../record/build-columns.js';
 import type { ReadResult } from '../record/close-reading.js';
 import { gridRows, type IntervalGrid } from '../record/interval-grid.js';
-import { buildColumns, type BuiltColumns, QUANTITIES, type QuantitySource } from '../record/build-columns.js';
-import { type Moments, momentsOf, showsEnds, skippedRows, type StampRules } from '../time/moments.js';
+import { type Moments, momentsOf, type StampRules, showsEnds, skippedRows } from '../time/moments.js';
 import type { DateOrder } from '../time/stamp-text.js';
 import type { ColumnChoice } from './column-choice.js';
 import type { CsvLayout } from './csv-layout.js';
 import { type DecimalSign, KEPT_COLUMNS, thousands } from './decimal-mark.js';
 import type { RowReader } from './row-reader.js';
-import { zoneTable } from '#libs/contract/time-zone.js';
 
 /** One way of reading whatever the file leaves open. */
 export interface CsvMeaning {

@@ -9,8 +9,8 @@ import { closeReading } from '../record/close-reading.js';
 import { shownReading } from '../record/reading-shown.js';
 import { RowProblems } from '../row-problems.js';
 import { qualify, readDay, readStream, type Stream, type StreamDay } from './nem12-records.js';
-import { StreamDays } from './stream-days.js';
 import { streamColumns } from './stream-columns.js';
+import { StreamDays } from './stream-days.js';
 
 const MARKS = { delimiter: 0x2c };
 

@@ -2,8 +2,8 @@ import type { MeterMap } from '#libs/contract/meter-map.js';
 import { createLoadRecord, InputProblem, type Remark, type ZoneTable } from '#libs/engine/index.js';
 import type { MeterReading } from '../meter-format.js';
 import { note } from '../note.js';
-import { qualityOf, type ReadCounts } from './quality.js';
 import type { RecordColumns } from './build-columns.js';
+import { qualityOf, type ReadCounts } from './quality.js';
 import { repairGaps } from './repair-gaps.js';
 
 /** What a reader has made of a file. */

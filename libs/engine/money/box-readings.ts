@@ -1,0 +1,131 @@
+import { DemandBox } from './demand-box.js';
+import { EnergyReading } from './energy-reading.js';
+import { demandBlocks, type Grouping, type Period, periods } from './grouping.js';
+import type { MeterBox } from './meter-box.js';
+import type { ReactiveBasis } from './papers.js';
+import type { Range } from './range.js';
+import { reactiveOf } from './reactive-basis.js';
+import type { Selection } from './selection.js';
+import type { TariffCalendar } from './tariff-calendar.js';
+
+/** Energies of a selection between the ends of a box, period by period. */
+export class EnergyBox {
+  readonly #low: EnergyReading;
+  readonly #high: EnergyReading;
+
+  /**
+   * @param selection the intervals
+   * @param grouping their periods, null for whole months
+   * @param hours length of an interval [h]
+   */
+  constructor(selection: Selection, grouping: Grouping | null, hours: number) {
+    this.#low = new EnergyReading(selection, grouping, hours);
+    this.#high = new EnergyReading(selection, grouping, hours);
+  }
+
+  /**
+   * Adds up one month.
+   * @param m index of the month
+   * @param box the meter's ends
+   */
+  read(m: number, box: MeterBox): void {
+    this.#low.read(m, box.low);
+    this.#high.read(m, box.high);
+  }
+
+  /** @returns periods of the month read */
+  get periods(): number {
+    return this.#low.periods;
+  }
+
+  /**
+   * @param period index of the period
+   * @returns E_p [kWh]
+   */
+  activeKwh(period: number): Range {
+    return { lo: this.#low.activeKwh[period]!, hi: this.#high.activeKwh[period]! };
+  }
+
+  /**
+   * @param basis what counts of lagging and leading
+   * @param period index of the period
+   * @returns E_q [kvarh]
+   */
+  reactiveKvarh(basis: ReactiveBasis, period: number): Range {
+    const [low, high] = [this.#low, this.#high];
+    if (basis === 'net') {
+      return {
+        lo: Math.max(low.laggingKvarh[period]! - high.leadingKvarh[period]!, 0),
+        hi: Math.max(high.laggingKvarh[period]! - low.leadingKvarh[period]!, 0),
+      };
+    }
+    return {
+      lo: reactiveOf(basis, low.laggingKvarh[period]!, low.leadingKvarh[period]!),
+      hi: reactiveOf(basis, high.laggingKvarh[period]!, high.leadingKvarh[period]!),
+    };
+  }
+}
+
+/** The boxes a tariff's bounds ask for, each formed once a month. */
+export class BoxReadings {
+  readonly #calendar: TariffCalendar;
+  readonly #demandS: number;
+  readonly #energies = new Map<string, EnergyBox>();
+  readonly #demands = new Map<string, DemandBox>();
+
+  /**
+   * @param calendar the record by the site's clock
+   * @param demandS length of a demand block [s]
+   */
+  constructor(calendar: TariffCalendar, demandS: number) {
+    this.#calendar = calendar;
+    this.#demandS = demandS;
+  }
+
+  /**
+   * Energies of a selection.
+   * @param selection the intervals
+   * @param per length of a period
+   * @returns the box, shared by all who ask for the same
+   */
+  energy(selection: Selection, per: Period): EnergyBox {
+    const key = `${per} ${selection.key}`;
+    const known = this.#energies.get(key);
+    if (known !== undefined) return known;
+    const made = new EnergyBox(selection, this.#periods(selection, per), this.#calendar.intervalS / 3600);
+    this.#energies.set(key, made);
+    return made;
+  }
+
+  /**
+   * Demand of a selection.
+   * @param selection the intervals
+   * @param per length of a period
+   * @param basis which kvar are held against each other
+   * @returns the box, shared by all who ask for the same
+   */
+  demand(selection: Selection, per: Period, basis: ReactiveBasis): DemandBox {
+    const key = `${per} ${basis} ${selection.key}`;
+    const known = this.#demands.get(key);
+    if (known !== undefined) return known;
+    const within = this.#periods(selection, per);
+    const blocks = demandBlocks(this.#calendar, selection, this.#demandS, within);
+    const made = new DemandBox({ selection, blocks, periods: within, basis });
+    this.#demands.set(key, made);
+    return made;
+  }
+
+  #periods(selection: Selection, per: Period): Grouping | null {
+    return per === 'month' ? null : periods(this.#calendar, selection, per);
+  }
+
+  /**
+   * Forms every box for one month.
+   * @param m index of the month
+   * @param box the meter's ends
+   */
+  read(m: number, box: MeterBox): void {
+    for (const reading of this.#energies.values()) reading.read(m, box);
+    for (const reading of this.#demands.values()) reading.read(m, box);
+  }
+}

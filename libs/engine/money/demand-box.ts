@@ -1,0 +1,162 @@
+import { type DemandShape, periodsOfBlocks } from './demand-reading.js';
+import type { MeterBox } from './meter-box.js';
+import type { ReactiveBasis } from './papers.js';
+import type { Range } from './range.js';
+import { reactiveOf } from './reactive-basis.js';
+
+/** Lower or upper ends of a period's greatest block means. */
+interface Ends {
+  kw: Float64Array;
+  kva: Float64Array;
+  kvar: Float64Array;
+  /** of the blocks that may be the one of greatest kW */
+  laggingAtMaxKw: Float64Array;
+  leadingAtMaxKw: Float64Array;
+}
+
+/** Greatest block means of a selection between the ends of a box, period by period. */
+export class DemandBox {
+  /** periods of the month read */
+  periods = 0;
+  readonly #shape: DemandShape;
+  readonly #periodOfBlock: Int32Array[] | null;
+  readonly #low: Ends;
+  readonly #high: Ends;
+  /** block means: kW, lagging, leading, lower ends, then upper ones */
+  readonly #means: Float64Array[];
+
+  /** @param shape intervals, blocks, periods, basis */
+  constructor(shape: DemandShape) {
+    this.#shape = shape;
+    const most = shape.periods?.most ?? 1;
+    this.#periodOfBlock = shape.periods === null ? null : periodsOfBlocks(shape, shape.periods);
+    this.#low = endsOf(most);
+    this.#high = endsOf(most);
+    this.#means = Array.from({ length: 6 }, () => new Float64Array(shape.blocks.most));
+  }
+
+  /**
+   * Finds the ends of one month.
+   * @param m index of the month
+   * @param box the meter's ends
+   */
+  read(m: number, box: MeterBox): void {
+    const { blocks, periods } = this.#shape;
+    this.periods = periods === null ? 1 : periods.sizes[m]!.length;
+    for (const ends of [this.#low, this.#high]) {
+      for (const column of Object.values(ends) as Float64Array[]) column.fill(0, 0, this.periods);
+    }
+    this.#meanBlocks(m, box);
+    const periodOfBlock = this.#periodOfBlock?.[m] ?? null;
+    const count = blocks.sizes[m]!.length;
+    for (let b = 0; b < count; b++) this.#take(b, periodOfBlock === null ? 0 : periodOfBlock[b]!);
+    this.#low.laggingAtMaxKw.fill(Number.POSITIVE_INFINITY, 0, this.periods);
+    this.#low.leadingAtMaxKw.fill(Number.POSITIVE_INFINITY, 0, this.periods);
+    for (let b = 0; b < count; b++) this.#takeAtMaxKw(b, periodOfBlock === null ? 0 : periodOfBlock[b]!);
+  }
+
+  #meanBlocks(m: number, { low, high }: MeterBox): void {
+    const { selection, blocks } = this.#shape;
+    const sizes = blocks.sizes[m]!;
+    const columns = [low.activeKw, low.laggingKvar, low.leadingKvar, high.activeKw, high.laggingKvar, high.leadingKvar];
+    for (const [c, column] of columns.entries()) {
+      const mean = this.#means[c]!.fill(0, 0, sizes.length);
+      for (let k = selection.monthFrom[m]!; k < selection.monthFrom[m + 1]!; k++) {
+        mean[blocks.groupOf[k]!]! += column[selection.intervals[k]!]!;
+      }
+      if (!blocks.single) for (let b = 0; b < sizes.length; b++) mean[b]! /= sizes[b]!;
+    }
+  }
+
+  #take(b: number, period: number): void {
+    const [kwLo, kwHi] = [this.#means[0]![b]!, this.#means[3]![b]!];
+    const [laggingLo, laggingHi] = [this.#means[1]![b]!, this.#means[4]![b]!];
+    const [leadingLo, leadingHi] = [this.#means[2]![b]!, this.#means[5]![b]!];
+    const netLo = laggingLo - leadingHi;
+    const netHi = laggingHi - leadingLo;
+    raise(this.#low.kw, period, kwLo);
+    raise(this.#high.kw, period, kwHi);
+    raise(this.#low.kva, period, length(nearestToZero(kwLo, kwHi), nearestToZero(netLo, netHi)));
+    raise(this.#high.kva, period, length(farthestFromZero(kwLo, kwHi), farthestFromZero(netLo, netHi)));
+    const { basis } = this.#shape;
+    raise(this.#low.kvar, period, basis === 'net' ? netLo : reactiveOf(basis, laggingLo, leadingLo));
+    raise(this.#high.kvar, period, basis === 'net' ? netHi : reactiveOf(basis, laggingHi, leadingHi));
+  }
+
+  // The block of greatest kW is one of those whose upper end reaches the greatest lower end.
+  #takeAtMaxKw(b: number, period: number): void {
+    const reached = this.#low.kw[period]!;
+    if (this.#means[3]![b]! < reached && reached > 0) return;
+    lower(this.#low.laggingAtMaxKw, period, this.#means[1]![b]!);
+    lower(this.#low.leadingAtMaxKw, period, this.#means[2]![b]!);
+    raise(this.#high.laggingAtMaxKw, period, this.#means[4]![b]!);
+    raise(this.#high.leadingAtMaxKw, period, this.#means[5]![b]!);
+  }
+
+  /**
+   * @param period index of the period
+   * @returns greatest mean, ≥ 0 [kW]
+   */
+  maxKw(period: number): Range {
+    return { lo: this.#low.kw[period]!, hi: this.#high.kw[period]! };
+  }
+
+  /**
+   * @param period index of the period
+   * @returns [kVA]
+   */
+  maxKva(period: number): Range {
+    return { lo: this.#low.kva[period]!, hi: this.#high.kva[period]! };
+  }
+
+  /**
+   * @param period index of the period
+   * @returns [kvar]
+   */
+  maxKvar(period: number): Range {
+    return { lo: this.#low.kvar[period]!, hi: this.#high.kvar[period]! };
+  }
+
+  /**
+   * @param basis what counts of lagging and leading
+   * @param period index of the period
+   * @returns kvar of the block of greatest kW [kvar]
+   */
+  kvarAtMaxKw(basis: ReactiveBasis, period: number): Range {
+    const at = (ends: Ends, column: 'laggingAtMaxKw' | 'leadingAtMaxKw'): number => {
+      const value = ends[column][period]!;
+      return Number.isFinite(value) ? value : 0;
+    };
+    const [laggingLo, laggingHi] = [at(this.#low, 'laggingAtMaxKw'), at(this.#high, 'laggingAtMaxKw')];
+    const [leadingLo, leadingHi] = [at(this.#low, 'leadingAtMaxKw'), at(this.#high, 'leadingAtMaxKw')];
+    if (basis === 'net') {
+      return { lo: Math.max(laggingLo - leadingHi, 0), hi: Math.max(laggingHi - leadingLo, 0) };
+    }
+    return { lo: reactiveOf(basis, laggingLo, leadingLo), hi: reactiveOf(basis, laggingHi, leadingHi) };
+  }
+}
+
+function endsOf(periods: number): Ends {
+  const column = (): Float64Array => new Float64Array(periods);
+  return { kw: column(), kva: column(), kvar: column(), laggingAtMaxKw: column(), leadingAtMaxKw: column() };
+}
+
+function raise(column: Float64Array, at: number, value: number): void {
+  if (value > column[at]!) column[at] = value;
+}
+
+function lower(column: Float64Array, at: number, value: number): void {
+  if (value < column[at]!) column[at] = value;
+}
+
+function length(a: number, b: number): number {
+  return Math.sqrt(a * a + b * b);
+}
+
+function nearestToZero(lo: number, hi: number): number {
+  return Math.max(lo, Math.min(hi, 0));
+}
+
+function farthestFromZero(lo: number, hi: number): number {
+  return Math.max(Math.abs(lo), Math.abs(hi));
+}

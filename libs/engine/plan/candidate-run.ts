@@ -1,0 +1,127 @@
+import type { Bank } from '../layout/bank.js';
+import { billMonth, newCarried } from '../money/bill.js';
+import type { PreparedTariff } from '../money/prepare-tariff.js';
+import type { Control } from '../operation/control.js';
+import type { ControllerView } from '../operation/controller-view.js';
+import { type MeterAfter, meterAfterInto } from '../operation/meter-after.js';
+import { Simulation } from '../operation/simulate.js';
+import { switchedBank } from '../operation/switched-bank.js';
+import { energyPowerFactor } from '../quantity/power-factor.js';
+import type { Study } from './study.js';
+
+/** Columns that every run writes its month into before it is priced; length n each. */
+export interface RunColumns {
+  connectedKvar: Float64Array;
+  meter: MeterAfter;
+}
+
+/**
+ * Columns for runs that take turns.
+ * @param n intervals of the record
+ * @returns columns
+ */
+export function runColumns(n: number): RunColumns {
+  const column = (): Float64Array => new Float64Array(n);
+  return {
+    connectedKvar: column(),
+    meter: { activeKw: column(), laggingKvar: column(), leadingKvar: column() },
+  };
+}
+
+/** What a run shares with all others. */
+export interface RunGround {
+  study: Study;
+  prepared: PreparedTariff;
+  columns: RunColumns;
+}
+
+/** A bank and its controller, simulated and priced month by month; what a month leaves is kept. */
+export class CandidateRun {
+  readonly bank: Bank;
+  readonly control: Control;
+  /** totals of the months done */
+  readonly afterTotals: Float64Array;
+  /** kvarh connected up to the end of each month done [kvarh] */
+  readonly connectedKvarh: Float64Array;
+  /** lagging kvarh at the meter up to the end of each month done [kvarh] */
+  readonly laggingKvarh: Float64Array;
+  /** switchings up to the end of each month done, one entry a stage */
+  readonly switchings: Int32Array[] = [];
+  /** months done in which the target holds, counted from the first until one misses it */
+  monthsInTarget = 0;
+  /** lowest monthly power factor so far, 1 where no month had energy */
+  lowestFactor = 1;
+  readonly #ground: RunGround;
+  readonly #simulation: Simulation;
+  readonly #carried: Float64Array;
+
+  /**
+   * @param ground study, tariff and shared columns
+   * @param bank the bank
+   * @param control settings
+   * @param view what the controller sees
+   */
+  constructor(ground: RunGround, bank: Bank, control: Control, view: ControllerView) {
+    this.#ground = ground;
+    this.bank = bank;
+    this.control = control;
+    this.#simulation = new Simulation(switchedBank(bank, ground.study.site.nominalV), control, view);
+    this.#carried = newCarried(ground.prepared);
+    const months = ground.prepared.calendar.months.length;
+    this.afterTotals = new Float64Array(months);
+    this.connectedKvarh = new Float64Array(months);
+    this.laggingKvarh = new Float64Array(months);
+  }
+
+  /** @returns months done */
+  get months(): number {
+    return this.switchings.length;
+  }
+
+  /** @returns valid intervals so far in which each stage was connected */
+  connectedIntervals(): Float64Array {
+    return this.#simulation.connectedIntervals();
+  }
+
+  /** Simulates and prices the next month. */
+  advance(): void {
+    const { study, prepared, columns } = this.#ground;
+    const m = this.months;
+    const { from, end } = prepared.calendar.months[m]!;
+    this.#simulation.runInto(columns.connectedKvar, end);
+    const delivered = this.#deliveredInto(from, end);
+    const { record, load } = study;
+    meterAfterInto(columns.meter, { record, load, connectedKvar: columns.connectedKvar }, from, end);
+    this.afterTotals[m] = billMonth(prepared, m, columns.meter, this.#carried);
+    this.connectedKvarh[m] = (this.connectedKvarh[m - 1] ?? 0) + delivered;
+    this.#takeTarget(m, from, end);
+    this.switchings.push(this.#simulation.switchings());
+  }
+
+  // Losses are those of the nominal kvar; the meter sees what the voltage makes of it.
+  #deliveredInto(from: number, end: number): number {
+    const { study, columns } = this.#ground;
+    const { connectedKvar } = columns;
+    let sum = 0;
+    for (let i = from; i < end; i++) sum += connectedKvar[i]!;
+    const { voltageScale } = study;
+    if (voltageScale !== null) for (let i = from; i < end; i++) connectedKvar[i]! *= voltageScale[i]!;
+    return (sum * study.record.intervalS) / 3600;
+  }
+
+  #takeTarget(m: number, from: number, end: number): void {
+    const { study, columns } = this.#ground;
+    const { activeKw, laggingKvar } = columns.meter;
+    let active = 0;
+    let lagging = 0;
+    for (let i = from; i < end; i++) {
+      active += Math.max(activeKw[i]!, 0);
+      lagging += laggingKvar[i]!;
+    }
+    this.laggingKvarh[m] = (this.laggingKvarh[m - 1] ?? 0) + (lagging * study.record.intervalS) / 3600;
+    const factor = energyPowerFactor(active, lagging);
+    this.lowestFactor = Math.min(this.lowestFactor, factor ?? 1);
+    const meets = factor === null || factor >= study.site.targetPowerFactor * (1 - 1e-12);
+    if (meets && this.monthsInTarget === m) this.monthsInTarget = m + 1;
+  }
+}

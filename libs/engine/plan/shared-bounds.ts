@@ -1,0 +1,100 @@
+import type { Build, SearchSpace } from '../layout/search-space.js';
+import { rangeTariff } from '../money/bill-range.js';
+import type { PreparedTariff } from '../money/prepare-tariff.js';
+import type { Control } from '../operation/control.js';
+import { controlReach } from '../operation/control-reach.js';
+import type { ControllerView } from '../operation/controller-view.js';
+import { CellBounds, type CellSize } from './bound-cell.js';
+import { boundRest, type WorthGround } from './candidate-worth.js';
+import type { Candidate, SharedBound } from './search.js';
+import type { Study } from './study.js';
+
+/** Totals and reaches within these ratios share their bounds. */
+const RATIO = { about: 1.12, size: 1.01, reach: 1.2 } as const;
+/** Keys of bounds: room for steps of size and of reach, each from −600 on. */
+const STEPS = 2000;
+const STEP_ZERO = 600;
+
+/** Bounds by size and controller; whatever many candidates ask for is formed once. */
+export class SharedBounds {
+  readonly #study: Study;
+  readonly #space: SearchSpace;
+  readonly #worth: WorthGround;
+  readonly #cells: CellBounds;
+  readonly #bounds = new Map<number, SharedBound>();
+
+  /**
+   * @param ground what every candidate is valued with
+   * @param prepared the tariff on its record
+   * @param space all candidates
+   */
+  constructor(ground: WorthGround, prepared: PreparedTariff, space: SearchSpace) {
+    this.#study = ground.study;
+    this.#space = space;
+    this.#worth = ground;
+    this.#cells = new CellBounds(ground.study, rangeTariff(prepared));
+  }
+
+  /**
+   * Bounds that look at no more than a total.
+   * @param build the build
+   * @param width how near its total is looked at
+   * @returns the bounds
+   */
+  bySize({ totalKvar }: Build, width: 'about' | 'size'): SharedBound {
+    const step = stepOf(totalKvar, RATIO[width]);
+    return this.#bound(keyOf(step, width === 'about' ? 0 : 1, 0), () => sizeOf(totalKvar, width));
+  }
+
+  /**
+   * Bounds that look at a total, a set point, and how near the controller keeps to what it wants.
+   * @param candidate the candidate
+   * @param control settings of its controller
+   * @param view what the controller sees at its set point
+   * @returns the bounds; those by size where the controller may be held back
+   */
+  byController(
+    candidate: Candidate,
+    control: Pick<Control, 'mode' | 'responseRatio' | 'stepDelayS' | 'reconnectDelayS'>,
+    view: ControllerView,
+  ): SharedBound {
+    const build = this.#space.builds[candidate.build]!;
+    const reach = controlReach({ ...build, stageCount: build.stages }, control, view);
+    if (!Number.isFinite(reach.aboveKvar)) return this.bySize(build, 'size');
+    const near = stepOf(reach.aboveKvar, RATIO.reach);
+    const held = Number.isFinite(reach.belowKvar) ? 0 : 1;
+    const key = keyOf(stepOf(build.totalKvar, RATIO.size), 2 + 2 * candidate.setPoint + held, near);
+    return this.#bound(key, () => {
+      const kvar = RATIO.reach ** near * (1 + 1e-9);
+      const wide = { aboveKvar: kvar, belowKvar: held === 0 ? kvar : Number.POSITIVE_INFINITY };
+      return { ...sizeOf(build.totalKvar, 'size'), wantedKvar: view.wantedKvar, reach: wide };
+    });
+  }
+
+  #bound(key: number, size: () => CellSize): SharedBound {
+    const known = this.#bounds.get(key);
+    if (known !== undefined) return known;
+    const cell = this.#cells.cell(size());
+    const rest = boundRest(this.#worth, cell.leastBill, cell.leastKvarh);
+    const made = { ...rest, mostLowestFactor: cell.mostLowestFactor };
+    this.#bounds.set(key, made);
+    return made;
+  }
+}
+
+function keyOf(size: number, kind: number, near: number): number {
+  return (kind * STEPS + size + STEP_ZERO) * STEPS + near + STEP_ZERO;
+}
+
+function stepOf(kvar: number, ratio: number): number {
+  return Math.ceil(Math.log(kvar) / Math.log(ratio) - 1e-9);
+}
+
+function sizeOf(totalKvar: number, width: 'about' | 'size'): CellSize {
+  const ratio = RATIO[width];
+  const step = stepOf(totalKvar, ratio);
+  const unheld = { aboveKvar: Number.POSITIVE_INFINITY, belowKvar: Number.POSITIVE_INFINITY };
+  // a little room for the powers of the ratio
+  const mostKvar = Math.max(totalKvar, ratio ** step * (1 + 1e-9));
+  return { mostKvar, leastKvar: ratio ** (step - 1) * (1 - 1e-9), wantedKvar: null, reach: unheld };
+}
