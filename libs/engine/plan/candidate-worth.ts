@@ -7,7 +7,7 @@ import { type Life, lossWPerKvar, replacements, runningCosts, switchLife } from 
 import { savingByMonth } from '../money/saving.js';
 import type { TariffMonth } from '../money/tariff-calendar.js';
 import type { CandidateRun } from './candidate-run.js';
-import { useOf } from './price-bank.js';
+import { usageOf } from './price-bank.js';
 import type { Study } from './study.js';
 
 /** What every candidate is valued with. */
@@ -141,7 +141,7 @@ export class BuildWorth {
   netPresentValue(run: CandidateRun): number {
     const { study, months, beforeTotals, finance } = this.#ground;
     const switchings = run.switchings[months.length - 1]!;
-    const use = useOf(study, run.bank, { connectedIntervals: run.connectedIntervals(), switchings });
+    const use = usageOf(study, run.bank, { connectedIntervals: run.connectedIntervals(), switchings });
     const of = { switchKind: this.#cost.switchKind, horizonYears: finance.horizonYears };
     const running = runningCosts(run.bank, this.#cost.prices, use, of);
     const { byMonth } = savingByMonth(months, beforeTotals, run.afterTotals);

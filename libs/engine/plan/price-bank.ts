@@ -18,7 +18,7 @@ import type { Operated, Study } from './study.js';
  * @returns hours connected, kvar and switchings of each stage
  * @source method-money
  */
-export function useOf(
+export function usageOf(
   study: Study,
   bank: Bank,
   run: { connectedIntervals: Float64Array; switchings: Int32Array },
@@ -70,7 +70,7 @@ export function priceBank(study: Study, money: MoneyStudy, priced: PricedBank): 
   if (money.prices === null) return { after, saving, worth: null };
   const cost = { ...money.prices, switchKind: priced.switchKind };
   const basis: WorthBasis = { cost, finance: money.finance, months };
-  const use = bank === null ? null : useOf(study, bank, operated.run);
+  const use = bank === null ? null : usageOf(study, bank, operated.run);
   return { after, saving, worth: worthOf(bank, saving, use, { ...basis, isNew: priced.isNew }) };
 }
 
