@@ -8,6 +8,8 @@ import { BestFirst } from './best-first.js';
 import type { CandidateRun } from './candidate-run.js';
 import type { BoundRest, BuildWorth } from './candidate-worth.js';
 
+// long: the walk over months, its bounds and the count of its proof are read together
+
 /** A candidate of the search: a build, its kind of switch, its set point. */
 export interface Candidate {
   build: number;
