@@ -25,7 +25,6 @@ const PACKAGE_HOMES = {
   fastify: ['apps/server'],
   rxjs: ['apps/server'],
   pino: ['apps/server', 'apps/cli'],
-  commander: ['apps/cli'],
   react: ['apps/web'],
   'react-dom': ['apps/web'],
 };

@@ -62,7 +62,9 @@ function operandProblems({ operand }: Command, operands: string[]): Problem[] {
 
 function stdinProblems(operands: string[], values: Map<string, string>): Problem[] {
   const files = [...operands, values.get('load'), values.get('map')].filter((file) => file === STDIN);
-  const toStdin = values.get('pdf') === STDIN ? [usage('--pdf with the name of a file', '"-"')] : [];
+  const toStdin = ['pdf', 'netlist']
+    .filter((name) => values.get(name) === STDIN)
+    .map((name) => usage(`--${name} with the name of a file`, '"-"'));
   return files.length > 1 ? [usage('"-" for one file only', `it ${files.length} times`), ...toStdin] : toStdin;
 }
 

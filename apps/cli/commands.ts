@@ -41,11 +41,14 @@ export const COMMANDS: Record<string, Command> = {
   },
   scan: {
     operand: 'SITE',
-    values: { level: 'KVAR', orders: 'A:B:STEP' },
+    values: { level: 'KVAR', orders: 'A:B:STEP', corner: 'K', netlist: 'OUT' },
     flags: ['json'],
     does: 'network impedance over harmonic order',
     details: `  --level KVAR       the level that is connected; all stages where not given
   --orders A:B:STEP  orders to compute, 1:50:0.02 where not given
+  --corner K         that corner alone, in the order of the list, 0 for the nominal one
+  --netlist OUT      write the network at that level and corner (nominal where not given) as a netlist for a circuit
+                     simulator, by default at the orders present; the gravest closing beside it, .inrush in its name
 `,
     load: () => import('./scan.js'),
   },

@@ -12,6 +12,7 @@ import {
   type LoadRecord,
   type Outcome,
   type Site,
+  withRobustness,
   type ZoneTable,
 } from '#libs/engine/index.js';
 import { putInWords } from '#libs/present/put-in-words.js';
@@ -21,8 +22,8 @@ import { usage } from './command-line.js';
 import { readJson } from './input-file.js';
 import { readMeterRecord } from './meter-record.js';
 import { say, write, writeJson } from './output.js';
-import { inFile } from './refused-file.js';
 import { proposalTarget } from './proposal-target.js';
+import { inFile } from './refused-file.js';
 
 type Judge = (site: Site, record: LoadRecord, zone: ZoneTable) => Outcome;
 
@@ -43,7 +44,7 @@ export async function judgeSite(line: CommandLine, kind: Outcome['kind'], judge:
   if (kind === 'assess') await inFile(line.operand, async () => needBank(site));
   const { record } = await readMeterRecord(line, load, site.timeZone);
   const zone = zoneTableOf(site.timeZone, record);
-  const outcome = judge(site, record, zone);
+  const outcome = withRobustness(judge(site, record, zone));
   await nextTurn(); // an interruption that came meanwhile is heard here
   const told: Outcome = { ...outcome, result: putInWords(outcome.result) };
   if (target !== null) {

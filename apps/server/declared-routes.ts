@@ -1,5 +1,4 @@
-import { RequestMethod, type Type } from '@nestjs/common';
-import { type INestApplication } from '@nestjs/common';
+import { type INestApplication, RequestMethod, type Type } from '@nestjs/common';
 import { ModulesContainer } from '@nestjs/core';
 import { type Declared, declarationOf } from './public.js';
 

@@ -1,10 +1,10 @@
+import { STATUS_CODES } from 'node:http';
 import { type ArgumentsHost, Catch, type ExceptionFilter, HttpException } from '@nestjs/common';
 import type { FastifyReply } from 'fastify';
-import { STATUS_CODES } from 'node:http';
 import { type ProblemJson, problemJson } from '#libs/contract/error-body.js';
 import { InputProblem, type ProblemCode } from '#libs/engine/index.js';
-import type { ServerLog } from './server-log.js';
 import { RefusedRequest } from './refused-request.js';
+import type { ServerLog } from './server-log.js';
 
 /** Answers every error as application/problem+json; a fault of ours is logged and not told. */
 @Catch()

@@ -32,6 +32,15 @@ const readings: [text: string, unit: string, value: number, why: string][] = [
   ['250 ms', 's', 0.25, 'a prefix on seconds'],
   ['1 GW', 'kW', 1e6, 'largest prefix'],
   ['4700 pF', '\u00b5F', 0.0047, 'smallest prefix'],
+  ['50 hp', 'kW', 37.284_993_579_113_51, 'mechanical horsepower, 550 ft·lbf/s = 745.69987158227022 W'],
+  ['0.4 km', 'm', 400, 'a length'],
+  ['120 mohm/km', 'ohm/km', 0.12, 'a resistance for a length'],
+  ['0.12 \u03a9/km', 'ohm/km', 0.12, 'with the sign'],
+  ['0.12 mohm/m', 'ohm/km', 0.12, 'both prefixes shift'],
+  ['25 kA', 'kA', 25, 'a fault current'],
+  ['95 mm\u00b2', 'mm2', 95, 'a cross-section'],
+  ['500 kcmil', 'mm2', 253.353_739_548_748_85, '1 000 circular mils are π/4 · (25.4 µm)² · 1 000'],
+  ['40 \u00b0C', '\u00b0C', 40, 'a temperature'],
 ];
 
 const refusals: [text: string, unit: string, fault: string, why: string][] = [
@@ -42,7 +51,10 @@ const refusals: [text: string, unit: string, fault: string, why: string][] = [
   ['5 kW', '%', 'other-dimension', 'a power is no share'],
   ['1 kWh', 'kW', 'other-dimension', 'an energy is no power'],
   ['5 kv', 'V', 'unknown-unit', 'letters have their case'],
-  ['5 hp', 'kW', 'unknown-unit', 'not in the table'],
+  ['5 furlong', 'm', 'unknown-unit', 'not in the table'],
+  ['5 ohm/furlong', 'ohm/km', 'unknown-unit', 'nor below a stroke'],
+  ['5 ohm', 'ohm/km', 'other-dimension', 'a resistance is none for a length'],
+  ['5 ohm/km/km', 'ohm/km', 'unknown-unit', 'one stroke at most'],
   ['5 k%', '%', 'unknown-unit', 'a share has no prefix'],
   ['5 constructor', 'V', 'unknown-unit', 'no word of the language is a unit'],
   ['1,25 MVA', 'kVA', 'number', 'a decimal comma'],
@@ -129,6 +141,14 @@ describe('the last word of a name', () => {
     ['interStageUh', '\u00b5H'],
     ['activeKwh', 'kWh'],
     ['laggingKvarh', 'kvarh'],
+    ['maxKa', 'kA'],
+    ['atKv', 'kV'],
+    ['lengthM', 'm'],
+    ['resistanceOhmPerKm', 'ohm/km'],
+    ['crossSectionMm2', 'mm2'],
+    ['ambientMaxC', '\u00b0C'],
+    ['allowedRiseK', 'K'],
+    ['airFlowM3PerH', 'm3/h'],
   ])('of %s means %s', (name, unit) => {
     expect(unitOfName(name)).toBe(unit);
   });

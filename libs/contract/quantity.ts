@@ -18,6 +18,7 @@ const BASE_UNITS: Record<string, string> = {
   varh: 'varh',
   VArh: 'varh',
   VAh: 'VAh',
+  m: 'm',
 };
 
 /** Units that take no prefix: what they measure, and their size in it. */
@@ -25,6 +26,15 @@ const WHOLE_UNITS: Record<string, { dimension: string; factor: number }> = {
   '%': { dimension: '%', factor: 1 },
   min: { dimension: 's', factor: 60 },
   h: { dimension: 's', factor: 3600 },
+  // mechanical horsepower, 550 ft·lbf/s
+  hp: { dimension: 'W', factor: 745.699_871_582_270_2 },
+  '\u00b0C': { dimension: '\u00b0C', factor: 1 },
+  K: { dimension: 'K', factor: 1 },
+  mm2: { dimension: 'mm2', factor: 1 },
+  'mm\u00b2': { dimension: 'mm2', factor: 1 },
+  kcmil: { dimension: 'mm2', factor: 0.506_707_479_097_497_7 },
+  'm3/h': { dimension: 'm3/h', factor: 1 },
+  'm\u00b3/h': { dimension: 'm3/h', factor: 1 },
 };
 
 /** Powers of ten; the micro sign and the Greek mu are two characters. */
@@ -42,6 +52,9 @@ const PREFIXES: Record<string, number> = {
 
 /** Last words of names that stand for a unit, longest first where one ends another. */
 const UNITS_OF_NAMES: [suffix: string, unit: string][] = [
+  ['OhmPerKm', 'ohm/km'],
+  ['M3PerH', 'm3/h'],
+  ['Mm2', 'mm2'],
   ['Kvarh', 'kvarh'],
   ['Kvah', 'kVAh'],
   ['Kwh', 'kWh'],
@@ -59,6 +72,11 @@ const UNITS_OF_NAMES: [suffix: string, unit: string][] = [
   ['A', 'A'],
   ['S', 's'],
   ['W', 'W'],
+  ['Ka', 'kA'],
+  ['Kv', 'kV'],
+  ['C', '\u00b0C'],
+  ['K', 'K'],
+  ['M', 'm'],
 ];
 
 const LONGEST_TEXT = 80;
@@ -120,7 +138,21 @@ function unitOf(spelled: string): Unit | null {
   if (plain !== undefined) return { dimension: plain, power: 0, factor: 1 };
   const power = own(PREFIXES, spelled.slice(0, 1));
   const dimension = own(BASE_UNITS, spelled.slice(1));
-  return power === undefined || dimension === undefined ? null : { dimension, power, factor: 1 };
+  if (power !== undefined && dimension !== undefined) return { dimension, power, factor: 1 };
+  return unitOfRatio(spelled);
+}
+
+/** "ohm/km": one unit for another, each with its own prefix. */
+function unitOfRatio(spelled: string): Unit | null {
+  const [top, bottom, more] = spelled.split('/');
+  if (top === undefined || bottom === undefined || more !== undefined) return null;
+  const [over, under] = [unitOf(top), unitOf(bottom)];
+  if (over === null || under === null) return null;
+  return {
+    dimension: `${over.dimension}/${under.dimension}`,
+    power: over.power - under.power,
+    factor: over.factor / under.factor,
+  };
 }
 
 /** A table's own entry: "constructor" is in no table of ours. */

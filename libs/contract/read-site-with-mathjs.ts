@@ -3,6 +3,7 @@ import { readQuantity } from './quantity.js';
 import { readSite } from './read-site.js';
 import type { ProblemParams } from './schema-parts.js';
 import { siteSchema } from './site-schema.js';
+import { understandSite } from './understand-site.js';
 
 /** Units the library and we understand alike; it takes VA for W and var for a complex W, so those stay ours alone. */
 const SHARED_UNITS = ['W', 'kW', 'kWh', 'V', 'A', 'ohm', 's', 'Hz'];
@@ -16,7 +17,7 @@ const SHARED_UNITS = ['W', 'kW', 'kWh', 'V', 'A', 'ohm', 's', 'Hz'];
  */
 export async function readSiteWithMathjs(json: unknown): Promise<Site> {
   const parsed = siteSchema.safeParse(json);
-  if (parsed.success) return parsed.data;
+  if (parsed.success) return understandSite(parsed.data, json);
   const strange = parsed.error.issues.flatMap((issue) => {
     const problem = issue.code === 'custom' ? (issue.params as ProblemParams | undefined)?.problem : undefined;
     const text = valueAt(json, issue.path);

@@ -1,5 +1,8 @@
+import { LIMIT_EDITIONS } from '#libs/engine/index.js';
+import { networkRules } from './network-rules.js';
 import { listAt, numberAt, partAt, type Readable, type RuleBreach, repeatsIn, textAt } from './rule-breach.js';
 import { shown } from './shown.js';
+import { spellingRules } from './spelling-rules.js';
 import { tariffRules } from './tariff-rules.js';
 
 /**
@@ -10,6 +13,9 @@ import { tariffRules } from './tariff-rules.js';
 export function siteRules(site: Readable): RuleBreach[] {
   return [
     ...voltageRules(site),
+    ...spellingRules(site),
+    ...networkRules(site),
+    ...limitRules(site),
     ...supplyRules(site),
     ...transformerRules(site),
     ...loadRules(site),
@@ -56,6 +62,8 @@ function supplyRules(site: Readable): RuleBreach[] {
 function arrangementRules(site: Readable, count: number): RuleBreach[] {
   const arrangement = partAt(site, 'supply', 'arrangement');
   const path = ['supply', 'arrangement'];
+  // With a network the buses of the transformers say how they stand.
+  if (partAt(site, 'network') !== undefined) return [];
   if (count > 1 && arrangement === undefined) {
     const expected = `"parallel" or "separate" for ${count} transformers`;
     return [{ code: 'missing', path, expected, found: 'nothing' }];
@@ -65,6 +73,29 @@ function arrangementRules(site: Readable, count: number): RuleBreach[] {
     return [{ code: 'not-supported-yet', path, expected, found: '"separate"' }];
   }
   return [];
+}
+
+/** An edition belongs to its rule set, and the user's own table alone needs rows. */
+function limitRules(site: Readable): RuleBreach[] {
+  const rules = partAt(site, 'rules');
+  const edition = textAt(site, 'limits', 'edition');
+  const path = ['limits', 'edition'];
+  if (edition === undefined || (rules !== 'iec' && rules !== 'ieee')) return ownRepeats(site);
+  const known: readonly string[] = LIMIT_EDITIONS[rules];
+  if (!known.includes(edition)) {
+    const expected = `an edition of the rule set: ${known.map(shown).join(', ')}`;
+    return [{ code: 'inconsistent', path, expected, found: shown(edition) }, ...ownRepeats(site)];
+  }
+  if (edition === 'own' && partAt(site, 'limits', 'own') === undefined) {
+    return [{ code: 'missing', path: ['limits', 'own'], expected: 'the limits to judge by', found: 'nothing' }];
+  }
+  return ownRepeats(site);
+}
+
+function ownRepeats(site: Readable): RuleBreach[] {
+  return (['voltage', 'current'] as const).flatMap((key) =>
+    repeatedOrders(listAt(site, 'limits', 'own', key), ['limits', 'own', key]),
+  );
 }
 
 /** z is more than r, also with z at the lower end of its tolerance. */
@@ -90,7 +121,9 @@ function loadRules(site: Readable): RuleBreach[] {
     }
     return [{ code: 'missing', path, expected: 'a list of orders, or the name of a spectrum', found: 'nothing' }];
   });
-  breaches.push(...repeatedOrders(listAt(site, 'loads', 'backgroundPct'), ['loads', 'backgroundPct']));
+  for (const path of [['backgroundPct'], ['measured', 'voltagePct'], ['measured', 'currentA']]) {
+    breaches.push(...repeatedOrders(listAt(site, 'loads', ...path), ['loads', ...path]));
+  }
   const max = numberAt(site, 'loads', 'dampingKw', 'max');
   const min = numberAt(site, 'loads', 'dampingKw', 'min');
   if (min > max) {

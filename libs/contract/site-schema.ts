@@ -1,10 +1,13 @@
 import * as z from 'zod';
 import { SPECTRUM_NAMES } from '#libs/engine/index.js';
+import { bankSchema } from './bank-schema.js';
 import { catalogueSchema } from './catalogue-schema.js';
 import { financeSchema } from './finance-schema.js';
+import { limitsSchema } from './limits-schema.js';
+import { networkSchema } from './network-schema.js';
+import { currentTransformerSchema, generatorRuleSchema, placeSchema } from './place-schema.js';
 import { pricesSchema } from './prices-schema.js';
 import {
-  CAPACITOR_V,
   currency,
   label,
   listOf,
@@ -16,10 +19,9 @@ import {
   plain,
   quantity,
   type Range,
-  reactorPct,
-  whole,
 } from './schema-parts.js';
 import { siteRules } from './site-rules.js';
+import { supplySchema } from './supply-schema.js';
 import { tariffSchema } from './tariff-schema.js';
 import { isTimeZone } from './time-zone.js';
 
@@ -47,27 +49,8 @@ const control = z.strictObject({
   stepDelayS: quantity('stepDelayS', DELAY).optional(),
   reconnectDelayS: quantity('reconnectDelayS', DELAY).optional(),
   wear: z.enum(['even', 'inOrder']).optional(),
-});
-
-const transformer = z.strictObject({
-  ratedKva: quantity('ratedKva', POSITIVE),
-  impedancePct: quantity('impedancePct', { above: 0, below: 100 }),
-  impedanceTolerancePct: quantity('impedanceTolerancePct', { min: 0, max: 50 }).optional(),
-  loadLossKw: quantity('loadLossKw', NOT_NEGATIVE).optional(),
-  noLoadLossKw: quantity('noLoadLossKw', NOT_NEGATIVE).optional(),
-  noLoadCurrentPct: quantity('noLoadCurrentPct', PERCENT).optional(),
-});
-
-const supply = z.strictObject({
-  faultLevelMva: z.strictObject({
-    max: quantity('faultLevelMva', POSITIVE),
-    min: quantity('faultLevelMva', POSITIVE).optional(),
-  }),
-  rOverX: plain({ min: 0, max: 100 }).optional(),
-  resistanceExponent: plain({ min: 0, max: 2 }).optional(),
-  rippleHz: quantity('rippleHz', POSITIVE).nullable().optional(),
-  arrangement: z.enum(['parallel', 'separate']).optional(),
-  transformers: listOf(transformer, 0, 20).optional(),
+  currentTransformer: currentTransformerSchema.optional(),
+  generator: generatorRuleSchema.optional(),
 });
 
 const order = (pct: Range) => z.strictObject({ orderH: plain({ above: 1, max: 50 }), pct: quantity('pct', pct) });
@@ -77,6 +60,7 @@ const loads = z.strictObject({
   distorting: listOf(
     z.strictObject({
       name: label(),
+      bus: label().optional(),
       fundamentalA: quantity('fundamentalA', NOT_NEGATIVE),
       spectrum: z.enum(SPECTRUM_NAMES).optional(),
       orders: listOf(order({ min: 0, max: 1000 }), 1, 200).optional(),
@@ -92,27 +76,29 @@ const loads = z.strictObject({
     })
     .optional(),
   summation: z.enum(['exponent', 'arithmetic']).optional(),
-});
-
-const stageGroup = z.strictObject({
-  count: whole(1, 100),
-  ratedKvar: quantity('ratedKvar', POSITIVE),
-  ratedV: quantity('ratedV', CAPACITOR_V),
-  reactorPct: reactorPct().optional(),
-  reactorQuality: plain(POSITIVE).optional(),
-  dischargeOhm: quantity('dischargeOhm', POSITIVE).optional(),
-  reactorMaxA: quantity('reactorMaxA', POSITIVE).optional(),
-  switchPeakA: quantity('switchPeakA', POSITIVE).optional(),
-  fixed: z.boolean().optional(),
-  capacitanceUf: quantity('capacitanceUf', POSITIVE).optional(),
-  reactorMh: quantity('reactorMh', POSITIVE).optional(),
-});
-
-const bank = z.strictObject({
-  stages: listOf(stageGroup, 1, 24),
-  interStageUh: quantity('interStageUh', POSITIVE).optional(),
-  ambientCategory: z.enum(['A', 'B', 'C', 'D']).optional(),
-  switchKind: label().optional(),
+  fast: listOf(
+    z.strictObject({
+      name: label(),
+      swingKvar: quantity('swingKvar', NOT_NEGATIVE).optional(),
+      swingS: quantity('swingS', POSITIVE).optional(),
+    }),
+    0,
+    100,
+  ).optional(),
+  measured: z
+    .strictObject({
+      place: label().optional(),
+      loadKw: quantity('loadKw').optional(),
+      bankKvar: quantity('bankKvar', NOT_NEGATIVE),
+      date: localDay().optional(),
+      voltagePct: listOf(order(PERCENT), 1, 200).optional(),
+      currentA: listOf(
+        z.strictObject({ orderH: plain({ above: 1, max: 50 }), a: quantity('currentA', NOT_NEGATIVE) }),
+        1,
+        200,
+      ).optional(),
+    })
+    .optional(),
 });
 
 /** Rules between fields look at whatever was readable, so that one wrong field doesn't hide another. */
@@ -147,10 +133,12 @@ export const siteSchema = z
       })
       .optional(),
     control: control.optional(),
-    supply,
+    supply: supplySchema,
     loads: loads.optional(),
-    bank: bank.optional(),
-    limits: z.strictObject({ emcClass: z.literal([1, 2, 3]).optional() }).optional(),
+    network: networkSchema.optional(),
+    bank: bankSchema.optional(),
+    limits: limitsSchema.optional(),
+    place: placeSchema.optional(),
     tariff: tariffSchema.optional(),
     prices: pricesSchema.optional(),
     catalogue: catalogueSchema.optional(),
@@ -159,3 +147,6 @@ export const siteSchema = z
   })
   .check(rules)
   .meta({ id: 'Site' });
+
+/** A site as the schema reads it, its quantities in whichever form they were given. */
+export type SiteGiven = z.output<typeof siteSchema>;

@@ -38,7 +38,6 @@ export const NOTE_CODES = {
   'nem12-streams-added': ['streams', 'quantity'],
   'nem12-streams-left-out': ['streams'],
   'nem12-substituted': ['values'],
-  'nem12-null': ['values'],
   'nem12-quality-unstated': ['values'],
 } as const satisfies Record<string, readonly string[]>;
 

@@ -98,6 +98,19 @@ export const ASSUMPTION_MESSAGES: Messages = {
   ),
   'default.catalogue.reactorPct': assumed('Reactor ratios are 0, 5.67, 7 or 14 %.', 'List what can be bought.'),
   'default.catalogue.maxStages': assumed('A bank has at most 12 stages.', 'Say how many ways the controller has.'),
+  'understood.value': {
+    level: 'information',
+    text: '{given} was read as {value}.',
+    consequence: 'Correct it if something else was meant.',
+  },
+  'default.limits.point': assumed(
+    'The voltage at the bus is held against the limits, and the bus is taken for the point of coupling.',
+    'Ask who owns the point of coupling, and where it lies.',
+  ),
+  'limits.tighterCopy': assumed(
+    'Copies of {edition} differ at order {orderH}, {usedPct} and {otherPct}: the tighter is used.',
+    'Read the standard itself.',
+  ),
   'bank.ignored': assumed(
     'The site’s own bank lends nothing to this plan.',
     'Judge it for itself, or say what was connected while the record was taken.',

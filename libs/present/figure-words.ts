@@ -29,6 +29,17 @@ const LABELS: Readonly<Record<string, string>> = {
   'operation.lowestMonthPowerFactor': 'power factor of the lowest month with the bank',
   'operation.freedKva': 'apparent power freed at the peak',
   'loads.truePowerFactorAfter': 'true power factor at the peak with the bank',
+  'devices.group[*].voltageChangePct': 'voltage change when a stage is switched',
+  'devices.group[*].leastRatedV': 'least rated voltage of the capacitor',
+  'devices.group[*].linearA': 'current to which the reactor keeps its inductance',
+  'devices.group[*].rippleOhm': 'reactance of a stage at the ripple frequency, above 0 where it blocks',
+  'devices.greatestFaultKa': 'equipment fault current, not the fault level of resonance',
+  'devices.peakFaultKa': 'peak of the equipment fault current',
+  'devices.leastFaultKa': 'least fault current, two phases',
+  'devices.instantaneousMinA': 'least instantaneous setting upstream',
+  'devices.cabinetHeatW': 'heat of the cabinet, at most',
+  'devices.airFlowM3PerH': 'air for that heat at the allowed rise',
+  'devices.responseA': 'response current at the current transformer’s secondary',
   'loads.neutralA': 'neutral current of the single-phase loads’ third harmonics',
 };
 

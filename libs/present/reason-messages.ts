@@ -51,6 +51,13 @@ export const REASON_MESSAGES: Messages = {
     text: 'The distortion of the supply is unknown, so the network is not judged.',
     consequence: 'Ask the network operator for it, or declare with an empty list that there is none.',
   },
+  'supply.weakerThanLoad': {
+    level: 'blocks issue',
+    text:
+      'The record’s greatest load, {loadKva}, is more than the least fault level at the bank, {shortCircuitMinMva}: such a ' +
+      'supply could not carry it, so what is computed from the fault level means little.',
+    consequence: 'Ask the network operator for the fault level again, and look at the unit it was given in.',
+  },
   'recordedBank.unknown': {
     level: 'to be accepted',
     text: 'Whether a bank was working while the record was taken is unknown, so the load’s own kvar are not known.',
@@ -105,6 +112,73 @@ export const REASON_MESSAGES: Messages = {
     level: 'information',
     text: 'Single intervals need up to {maxKvar}, and yet the target {targetPowerFactor} is met in every month without a bank.',
     consequence: 'No bank is needed for the target.',
+  },
+  'device.short': {
+    level: 'blocks issue',
+    text: '{device}[ of group {group}] falls short[: {value}][ against {limit}].',
+    subject: '{device}[ of group {group}] falls short',
+    consequence: 'Fit what the table of devices asks for.',
+  },
+  'device.shortByPractice': {
+    level: 'to be accepted',
+    text: '{device}[ of group {group}] falls short of common practice[: {value}][ against {limit}].',
+    subject: '{device}[ of group {group}] falls short of common practice',
+    consequence: 'Fit what the table of devices asks for, or accept it with a reason.',
+  },
+  'device.riseOverLimit': {
+    level: 'to be accepted',
+    text: 'If the bank’s own voltage rise is not in the highest bus voltage, the capacitors of group {group} are rated too low: {value} against {limit}.',
+    subject: 'Rated voltage of group {group}, if the bank’s own rise is not in the highest bus voltage',
+    consequence: 'Say what the highest voltage includes, or take the next rated voltage.',
+  },
+  'device.noResponse': {
+    level: 'to be accepted',
+    text: '{device}: the controller answers to {value}, and the smallest stage gives {limit} at its threshold.',
+    subject: '{device}: the smallest stage gives less than the controller answers to',
+    consequence: 'Take a transformer of a smaller ratio, or a larger smallest stage.',
+  },
+  'measured.noLevel': {
+    level: 'to be noted',
+    text: 'A measurement was given with {bankKvar} connected, which is no level of this bank, so it is not compared.',
+    consequence: 'Give the bank that was connected, or measure again.',
+  },
+  'measured.above': {
+    level: 'to be accepted',
+    text: 'The {quantity} measured at order {orderH} on {bus}, {value}, is above every corner of the model, {limit} at most.',
+    subject: 'Measured {quantity} at order {orderH} on {bus}, above every corner of the model',
+    consequence: 'Look for a load or a background that was not listed; the model says too little at this order.',
+  },
+  'measured.below': {
+    level: 'to be noted',
+    text: 'The {quantity} measured at order {orderH} on {bus}, {value}, is below every corner of the model, {limit} at least.',
+    subject: 'Measured {quantity} at order {orderH} on {bus}, below every corner of the model',
+    consequence: 'The model errs on the severe side here; ask at what load it was measured.',
+  },
+  'ageing.overLimit': {
+    level: 'to be accepted',
+    text: 'With {leftPct} of the capacitance left[ in one stage of group {group}] the bank passes a limit[, tuned to order {tunedOrderH}].',
+    consequence: 'Measure the capacitance every year and take a stage out at the value printed.',
+  },
+  'ageing.takeOut': {
+    level: 'to be accepted',
+    text: 'A stage of group {group} was measured at {capacitanceUf} a phase; it must come out at {comesOutUf}.',
+    consequence: 'Take the stage out, or renew its capacitor.',
+  },
+  'loads.fast': {
+    level: 'to be noted',
+    text: '{name} swings[ by {swingKvar}][ within {swingS}], faster than stages can follow that wait {stepDelayS} between steps: they hold the target of energy alone.',
+    consequence: 'Use switches without contacts if every swing has to be followed.',
+  },
+  'supply.photovoltaic': {
+    level: 'to be noted',
+    text: 'Photovoltaic plant of {photovoltaicKw} takes active power off the meter and leaves the kvar: the power factor falls by day.',
+    consequence: 'Ask what kvar its inverters give, and how the target holds while the site exports.',
+  },
+  'limits.notCouplingPoint': {
+    level: 'to be noted',
+    text: 'The limits of {edition} are held against the voltage at {point}; the point of coupling lies at the {couplingPoint}.',
+    consequence:
+      'Ask the network operator for the limits there; this site’s own share of the distortion is less there.',
   },
   'layout.noCandidate': {
     level: 'blocks issue',

@@ -1,4 +1,5 @@
 import type { Remark } from '#libs/engine/index.js';
+import { deviceName, enteredWords } from './device-words.js';
 import { formatApart, formatNumber, formatQuantity, GAP, unitOfName } from './format-number.js';
 import { formatLength, formatMonth } from './local-stamp.js';
 import type { Message } from './message.js';
@@ -85,7 +86,7 @@ function complete(part: string, remark: Remark): boolean {
 
 /** Lengths of time read better in minutes; a value held against its limit keeps apart from it. */
 function valueWords(name: string, value: number | string, remark: Remark): string {
-  if (typeof value === 'string') return name === 'month' ? formatMonth(value) : plainName(spaced(value));
+  if (typeof value === 'string') return textWords(name, value);
   const unit = name === 'value' || name === 'limit' ? (remark.unit ?? '') : unitOfName(name);
   if (unit === 's') return seconds(value);
   const { value: found, limit } = remark.values;
@@ -94,6 +95,13 @@ function valueWords(name: string, value: number | string, remark: Remark): strin
     return `${name === 'value' ? apart.value : apart.limit}${GAP}${unit}`;
   }
   return formatQuantity(value, unit, 'given');
+}
+
+function textWords(name: string, value: string): string {
+  if (name === 'month') return formatMonth(value);
+  if (name === 'device') return deviceName(value);
+  if (name === 'value' || name === 'limit') return plainName(enteredWords(spaced(value)));
+  return plainName(spaced(value));
 }
 
 function seconds(value: number): string {

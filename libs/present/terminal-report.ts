@@ -1,4 +1,5 @@
 import { type Outcome, type RecordSummary, type ScannedLevel, UTC_TABLE, type ZoneTable } from '#libs/engine/index.js';
+import { deviceTable, openDevices } from './device-words.js';
 import { dutyName } from './figure-words.js';
 import { formatApart, formatNumber, formatQuantity, GAP } from './format-number.js';
 import { formatLength, formatMoment } from './local-stamp.js';
@@ -51,6 +52,7 @@ export function resultReport(outcome: Outcome): string {
     ),
     '',
     ...dutyLines(outcome),
+    ...deviceLines(outcome),
     ...reasonLines(outcome),
   ];
   return finished(lines);
@@ -75,19 +77,32 @@ export function recordReport(summary: RecordSummary, zone: ZoneTable = UTC_TABLE
 export function scanReport(levels: readonly ScannedLevel[]): string {
   const first = levels[0];
   if (first === undefined) return '';
-  const head = ['fault level', 'capacitance', 'inductance', 'damping', 'peak at order', 'peak'];
-  const rows = levels.map(({ corner, parallelOrderH, peakOhm }) => [
+  const severalBuses = levels.some(({ bus }) => bus !== first.bus);
+  const severalStandings = levels.some(({ corner }) => corner.standing !== undefined);
+  const head = [
+    ...(severalBuses ? ['bus'] : []),
+    'fault level',
+    'capacitance',
+    'inductance',
+    'damping',
+    'peak at order',
+    'peak',
+    ...(severalStandings ? ['standing'] : []),
+  ];
+  const rows = levels.map(({ bus, corner, parallelOrderH, peakOhm }) => [
+    ...(severalBuses ? [plainName(bus)] : []),
     formatQuantity(corner.faultLevelMva, 'MVA', 'given'),
     `× ${formatNumber(corner.capacitanceFactor, 'given')}`,
     `× ${formatNumber(corner.inductanceFactor, 'given')}`,
     formatQuantity(corner.dampingKw, 'kW'),
     formatQuantity(parallelOrderH, ''),
     formatQuantity(peakOhm, 'Ω'),
+    ...(severalStandings ? [plainName(corner.standing ?? 'normal')] : []),
   ]);
   const widths = head.map((text, at) => Math.max(text.length, ...rows.map((cells) => cells[at]!.length)));
   const line = (cells: readonly string[]) => cells.map((cell, at) => cell.padStart(widths[at]!)).join('  ');
   return finished([
-    `Impedance at the bus with ${formatQuantity(first.levelKvar, 'kvar')} connected; the first row is the nominal case.`,
+    `Impedance at ${severalBuses ? 'each bus' : 'the bus'} with ${formatQuantity(first.levelKvar, 'kvar')} connected; the first row is the nominal case.`,
     line(head),
     ...rows.map(line),
   ]);
@@ -133,6 +148,20 @@ function dutyLines({ result }: Outcome): string[] {
       `${name!.padEnd(widths[0]!)}  ${value!.padStart(widths[1]!)} of ${limit!.padStart(widths[2]!)}  ${verdict}`,
   );
   return [...lines, ''];
+}
+
+/** Devices that were entered or fall short; what is open is counted. */
+function deviceLines(outcome: Outcome): string[] {
+  const { devices } = outcome.result;
+  if (devices.length === 0) return [];
+  const short = deviceTable(outcome).filter((_, at) => devices[at]!.state === 'short');
+  const lines = short.map(({ device, need, fitted }) => `${device}: ${fitted}, needs ${need}`);
+  const fits = devices.filter(({ state }) => state === 'fits').length;
+  return [
+    row('devices', `${devices.length}: ${fits} fit, ${short.length} fall short, ${openDevices(devices)} not entered`),
+    ...lines.flatMap((line) => wrapped(`  ${line}`, '    ')),
+    '',
+  ];
 }
 
 function reasonLines({ result }: Outcome): string[] {

@@ -15,6 +15,7 @@ export function drawBasis(paper: Paper, outcome: Outcome): void {
       `${formatNumber(site.frequencyHz, 'given')} Hz. Target power factor ${formatNumber(site.targetPowerFactor, 'given')} ` +
       `at the ${site.meteredAt === 'primary' ? 'transformer’s primary' : 'board'}, held in every billing month.`,
   ]);
+  paper.paragraph([pointWords(outcome)]);
   const columns = [
     { head: 'rule', share: 28 },
     { head: 'edition', share: 22 },
@@ -52,9 +53,19 @@ function drawLoads(paper: Paper, { site }: Outcome): void {
   drawTable(paper, columns, rows);
 }
 
+/** Where the limits of distortion were held against the voltage. */
+function pointWords({ result }: Outcome): string {
+  const { voltage, points, couplingPoint, atCouplingPoint } = result.limits;
+  const at = points.map(plainName).join(', ');
+  const judged = `${voltage} is held against the voltage at ${points.length === 1 ? 'bus' : 'the buses'} ${at}`;
+  if (atCouplingPoint) return `${judged}; the point of coupling is ${plainName(couplingPoint)}.`;
+  const where = couplingPoint === 'primary' ? 'the transformer’s primary' : plainName(couplingPoint);
+  return `${judged}, which is not the point of coupling: that lies at ${where}.`;
+}
+
 /** Every value that was taken because none was given, and what settles it. */
 export function drawAssumptions(paper: Paper, outcome: Outcome): void {
-  const { assumptions } = outcome.result;
+  const assumptions = outcome.result.assumptions.filter(({ code }) => !code.startsWith('understood.'));
   const count = assumptions.length;
   paper.heading(
     '4',
@@ -62,6 +73,7 @@ export function drawAssumptions(paper: Paper, outcome: Outcome): void {
   );
   if (count === 0) {
     paper.paragraph(['Every value was given.']);
+    drawUnderstood(paper, outcome);
     return;
   }
   const columns = [
@@ -70,5 +82,19 @@ export function drawAssumptions(paper: Paper, outcome: Outcome): void {
     { head: 'what settles it', share: 34 },
   ];
   const rows = assumptions.map((one) => [one.text, plainName(one.path ?? ''), remarkConsequence(one)]);
+  drawTable(paper, columns, rows, { style: { ...NOTE, ink: '#000000', size: 9.2 } });
+  drawUnderstood(paper, outcome);
+}
+
+/** Values that were given in another form, as they were understood. */
+function drawUnderstood(paper: Paper, outcome: Outcome): void {
+  const understood = outcome.result.assumptions.filter(({ code }) => code.startsWith('understood.'));
+  if (understood.length === 0) return;
+  paper.heading('4.1', 'As understood: values that were given in another form', { level: 3 });
+  const columns = [
+    { head: 'understood', share: 60 },
+    { head: 'field', share: 40 },
+  ];
+  const rows = understood.map((one) => [one.text, plainName(one.path ?? '')]);
   drawTable(paper, columns, rows, { style: { ...NOTE, ink: '#000000', size: 9.2 } });
 }

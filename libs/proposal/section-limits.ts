@@ -1,4 +1,11 @@
-import { AMBIENT_CATEGORIES, cornerSet, type Outcome, OVERVOLTAGE_DURATIONS } from '#libs/engine/index.js';
+import {
+  AMBIENT_CATEGORIES,
+  cornerSet,
+  networkStates,
+  type Outcome,
+  OVERVOLTAGE_DURATIONS,
+} from '#libs/engine/index.js';
+import { countWord } from '#libs/present/findings.js';
 import { formatNumber, formatQuantity, formatRange } from '#libs/present/format-number.js';
 import { formatMoment } from '#libs/present/local-stamp.js';
 import type { Paper } from './paper.js';
@@ -14,7 +21,7 @@ export function drawValidity(paper: Paper, outcome: Outcome): void {
   drawTable(paper, columns, validityRows(outcome), { after: 6 });
   paper.paragraph([
     'The range of each input within which the verdict stays the same is not computed in this edition (section 10), nor are ' +
-      'costs and savings (section 11). Ageing, growth or loss of load, a stage or a transformer out of service: plan again.',
+      'costs and savings (section 11). Growth or loss of load, a stage or a transformer out of service: plan again.',
   ]);
   if (outcome.site.rules === 'iec' && outcome.bank.groups.length > 0) {
     const times = OVERVOLTAGE_DURATIONS.map(
@@ -26,7 +33,9 @@ export function drawValidity(paper: Paper, outcome: Outcome): void {
 
 function validityRows(outcome: Outcome): string[][] {
   const { site, record, zone, bank, result } = outcome;
-  const { corners } = cornerSet(site.supply, site.loads, site.nominalV);
+  const states = site.topology === null ? [null] : networkStates(site.topology);
+  const { corners } = cornerSet(site.supply, site.loads, site.nominalV, states);
+  const buses = result.limits.points.length;
   const { faultLevelMva } = site.supply;
   const present = (result.network.levels[0]?.orders ?? []).map(({ orderH }) => formatNumber(orderH, 'given'));
   const rows = [
@@ -48,7 +57,10 @@ function validityRows(outcome: Outcome): string[][] {
         ? 'none present'
         : `${present.join(', ')}; none above 50, none between whole orders unless listed`,
     ],
-    ['network', 'balanced, one bus; reactances in proportion to the order or its inverse'],
+    [
+      'network',
+      `balanced, ${buses === 1 ? 'one bus' : `${countWord(buses)} buses`}; reactances in proportion to the order or its inverse`,
+    ],
   ];
   if (site.asOf !== null) rows.push(['as of', site.asOf]);
   if (bank.ambientCategory !== null) {

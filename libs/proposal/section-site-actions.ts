@@ -40,6 +40,11 @@ function blank(paper: Paper): Cell {
 function siteActions(outcome: Outcome): [string, string][] {
   const { site, result, bank } = outcome;
   const { control, charge } = result;
+  const met = (name: string): number | null => {
+    const value = result.devices.find(({ device }) => device === name)?.value;
+    return typeof value === 'number' ? value : null;
+  };
+  const [faultKa, peakKa] = [met('mainDevice.breaking'), met('busbar.withstand')] as const;
   const currents = bank.groups.map((group, at) => {
     const stage = result.bank.stages.find(
       (one) => one.ratedKvar === group.ratedKvar && one.reactorPct === group.reactorPct,
@@ -62,7 +67,10 @@ function siteActions(outcome: Outcome): [string, string][] {
       'Ask the network operator for the greatest and least fault level, in writing.',
       `${formatNumber(site.supply.faultLevelMva.min, 'given')} and ${formatQuantity(site.supply.faultLevelMva.max, 'MVA', 'given')}`,
     ],
-    ['Choose devices and cables for the greatest fault current by its own standard.', 'not from this paper'],
+    [
+      'Check breaking capacity and withstand of what is fitted against the equipment fault current of section 7.2.',
+      `${formatQuantity(faultKa, 'kA')}, peak ${formatQuantity(peakKa, 'kA')}`,
+    ],
     ['Measure the capacitance of one delta phase of every stage, discharged and isolated.', capacitance.join('; ')],
     ['Measure or read the discharge resistors.', resistors.join('; ')],
     [

@@ -1,13 +1,11 @@
-import { dischargeS, type Outcome, ratedA, type StageGroup } from '#libs/engine/index.js';
+import { dischargeS, type Outcome, type StageGroup } from '#libs/engine/index.js';
 import { countWord } from '#libs/present/findings.js';
-import { formatNumber, formatQuantity, formatRange, GAP } from '#libs/present/format-number.js';
+import { formatNumber, formatQuantity, GAP } from '#libs/present/format-number.js';
 import { formatLength } from '#libs/present/local-stamp.js';
 import { bothRatings } from '#libs/present/single-line.js';
 import { NOTE, type Paper } from './paper.js';
+import { drawDevices } from './section-devices.js';
 import { type Column, drawTable } from './table.js';
-
-/** A fuse for a capacitor stage, as a multiple of its rated current; common practice, no source. */
-const FUSE_RATIO = { low: 1.6, high: 2 };
 
 /** Stages with both ratings, what protects them, and how long each keeps its charge. */
 export function drawStages(paper: Paper, outcome: Outcome): void {
@@ -29,7 +27,7 @@ export function drawStages(paper: Paper, outcome: Outcome): void {
   );
   paper.paragraph([levelWords(outcome)], { style: NOTE });
   drawControl(paper, outcome);
-  drawProtection(paper, outcome);
+  drawDevices(paper, outcome);
   drawDischarge(paper, outcome);
 }
 
@@ -73,43 +71,6 @@ function drawControl(paper: Paper, { result }: Outcome): void {
     `Controller: set point ${formatNumber(control.setPointPowerFactor, 'given')}, ${modes[control.mode]}, response ` +
       `${formatNumber(control.responseRatio, 'given')} of the smallest stage, step delay ${formatQuantity(control.stepDelayS, 's', 'given')}, ` +
       `reconnection delay ${formatQuantity(control.reconnectDelayS, 's', 'given')}, equal stages ${wear[control.wear]}.`,
-  ]);
-}
-
-function drawProtection(paper: Paper, outcome: Outcome): void {
-  const { bank, result, site } = outcome;
-  paper.heading(
-    '7.2',
-    `Protection: conductors and disconnector for ${formatQuantity(result.conductorMinA, 'A')} or more`,
-    { level: 3 },
-  );
-  const columns: Column[] = [
-    { head: 'group', share: 8 },
-    { head: 'rated current', share: 16, align: 'right' },
-    { head: `at ${formatQuantity(site.nominalV, 'V', 'given')}`, share: 16, align: 'right' },
-    { head: 'fuse of a stage', share: 22, align: 'right' },
-    { head: 'basis', share: 50 },
-  ];
-  const rows = bank.groups.map((group, at) => {
-    const rated = ratedA(group);
-    const { low, high } = FUSE_RATIO;
-    const stage = result.bank.stages.find(
-      (one) => one.ratedKvar === group.ratedKvar && one.reactorPct === group.reactorPct,
-    );
-    const effectiveA = ((stage?.effectiveKvar ?? 0) * 1000) / (Math.sqrt(3) * site.nominalV);
-    return [
-      String(at + 1),
-      formatQuantity(rated, 'A'),
-      formatQuantity(effectiveA, 'A'),
-      formatRange({ low: low * rated, high: high * rated }, 'A', 'computed'),
-      `${formatNumber(low, 'given')} to ${formatNumber(high, 'given')} × rated current, high breaking capacity: common practice, no source`,
-    ];
-  });
-  drawTable(paper, columns, rows, { after: 4 });
-  paper.paragraph([
-    'Not computed here: short-time withstand and breaking capacity, which need the greatest fault current by its own standard ' +
-      '(voltage factor, least impedance, motor contribution) and not the fault level printed for resonance; selectivity; cable ' +
-      'by length, laying and temperature; heat and air flow of the enclosure.',
   ]);
 }
 

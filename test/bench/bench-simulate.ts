@@ -28,7 +28,8 @@ function simulationWork(layout: string, groups: [count: number, ratedKvar: numbe
   const view = controllerView();
   const n = view.beginS.length;
   const bank = switchedBank(plainBank(groups), NOMINAL_V);
-  let run = simulate(bank, control, view);
+  const connectedKvar = new Float64Array(n);
+  let run = simulate(bank, control, view, connectedKvar);
   const settings = [n, control.responseRatio * bank.smallestKvar, bank.smallestKvar];
   const timing = [Math.floor(view.intervalS / control.stepDelayS), control.reconnectDelayS];
   const classes = bank.classes.flatMap(({ kvar, stages }) => [kvar, stages.length]);
@@ -46,7 +47,7 @@ function simulationWork(layout: string, groups: [count: number, ratedKvar: numbe
       ...view.beginS,
     ]),
     ours: () => {
-      run = simulate(bank, control, view);
+      run = simulate(bank, control, view, connectedKvar);
     },
     output: () => {
       // The twin lists its stages class by class.

@@ -1,14 +1,15 @@
 // How fast the program is on this machine: its two hot loops against the same work in C, and one whole plan.
+import { busesWorks } from './bench-buses.js';
+import { benchPlan } from './bench-plan.js';
 import { scanWork } from './bench-scan.js';
 import { simulationWorks } from './bench-simulate.js';
-import { benchPlan } from './bench-plan.js';
 import { compareTwins } from './compare-twins.js';
 import { crowding } from './stopwatch.js';
 
 const MOST_CROWDING = 1.15;
 
 const before = await crowding();
-const met = [...simulationWorks(), scanWork()].map((work) => compareTwins(work)?.met ?? true);
+const met = [...simulationWorks(), scanWork(), ...busesWorks()].map((work) => compareTwins(work)?.met ?? true);
 met.push(benchPlan());
 const crowded = Math.max(before, await crowding());
 const counts = crowded <= MOST_CROWDING;

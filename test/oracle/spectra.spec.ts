@@ -4,7 +4,7 @@
 // - diode bridge without and with choke, twelve-pulse, active front end, orders 5 to 19: common practice; from memory.
 // - single-phase electronic, orders 3 to 15: IEEE 1100, typical values; from memory.
 import { describe, expect, it } from 'vitest';
-import { injectedOrders, neutralA, SPECTRA, type SpectrumName } from '#libs/engine/index.js';
+import { type DistortingLoad, injectedOrders, neutralA, SPECTRA, type SpectrumName } from '#libs/engine/index.js';
 
 const TO_19 = [5, 7, 11, 13, 17, 19];
 const TO_25 = [...TO_19, 23, 25];
@@ -41,15 +41,23 @@ describe('named spectra', () => {
 
 describe('triplens of single-phase electronic loads', () => {
   const load = { name: 'lighting', fundamentalA: 100, spectrum: 'single-phase-electronic' as const };
+  const loadsOf = (distorting: DistortingLoad[]) => ({ distorting, summation: 'exponent' as const });
 
   it('stay out of the bank and meet in the neutral at three times their phase value', () => {
     expect(injectedOrders(load).map(({ orderH }) => orderH)).toEqual([5, 7, 11, 13]);
-    expect(neutralA([load])).toBeCloseTo(3 * Math.hypot(81, 15.7, 7.9), 9);
+    expect(neutralA(loadsOf([load]))).toBeCloseTo(3 * Math.hypot(81, 15.7, 7.9), 9);
+  });
+
+  it('of two loads are as many as of one twice the size, where they add: the 3rd to the last ampere', () => {
+    const halves = [50, 50].map((fundamentalA) => ({ ...load, fundamentalA }));
+    const arithmetic = { distorting: halves, summation: 'arithmetic' as const };
+    expect(neutralA(arithmetic)).toBeCloseTo(neutralA(loadsOf([load])), 9);
+    expect(neutralA(loadsOf(halves))).toBeGreaterThan(3 * 81);
   });
 
   it('given as orders are what the bank sees', () => {
     const given = { name: 'lighting', fundamentalA: 100, orders: [{ orderH: 3, pct: 81 }] };
     expect(injectedOrders(given)).toEqual([{ orderH: 3, pct: 81 }]);
-    expect(neutralA([given])).toBe(0);
+    expect(neutralA(loadsOf([given]))).toBe(0);
   });
 });

@@ -7,8 +7,8 @@ import { zoneTable } from '#libs/contract/time-zone.js';
 import { createLoadRecord, type LoadRecord, offsetAtS } from '#libs/engine/index.js';
 import { writeRecordCsv } from '#libs/meter-files/write-record-csv.js';
 import { readMeterText } from '../support/meter-text.js';
+import { runs, SEED } from '../support/soak.js';
 
-const SEED = 20_240_506;
 const ZONES = [
   'UTC',
   'Europe/Berlin',
@@ -88,7 +88,7 @@ describe('a record as CSV', () => {
         expect(contentOf(read.record)).toBe(contentOf(record));
         expect(read.record.missing).toBe(record.missing);
       }),
-      { seed: SEED, numRuns: 200 },
+      { seed: SEED, numRuns: runs(200, 2000) },
     );
   });
 });
@@ -140,7 +140,7 @@ describe('a record in local time', () => {
         const read = await readMeterText(file, { siteTimeZone });
         expect(contentOf(read.record)).toBe(contentOf(record));
       }),
-      { seed: SEED, numRuns: 150 },
+      { seed: SEED, numRuns: runs(150, 1500) },
     );
   });
 
@@ -157,7 +157,7 @@ describe('a record in local time', () => {
         expect(anyOrder.quality).toEqual(inOrder.quality);
         expect(contentOf(anyOrder.record)).toBe(contentOf(record));
       }),
-      { seed: SEED, numRuns: 100 },
+      { seed: SEED, numRuns: runs(100, 1000) },
     );
   });
 });

@@ -2,8 +2,8 @@
 import { describe, expect, it } from 'vitest';
 import { assessBank, type Result, type Site, scanSite, UTC_TABLE } from '#libs/engine/index.js';
 import { type Chance, chance } from '../support/chance.js';
-import { driftingLoad, madeRecord } from '../support/made-record.js';
 import { randomNetwork } from '../support/made-network.js';
+import { driftingLoad, madeRecord } from '../support/made-record.js';
 import { madeSite } from '../support/made-site.js';
 import { runs, SEED } from '../support/soak.js';
 

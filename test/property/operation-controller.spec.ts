@@ -48,7 +48,8 @@ function madeCase(random: Chance): Case {
     control,
     wantedKvar,
     slots,
-    voltageScale: random.next() < 0.3 ? slots.map(() => random.between(0.85, 1.1) ** 2) : null,
+    voltageScale:
+      random.next() < 0.3 ? slots.map(() => (random.next() < 0.03 ? 0 : random.between(0.85, 1.1) ** 2)) : null,
     standby: random.next() < 0.3 ? slots.map(() => (random.next() < 0.15 ? 1 : 0)) : null,
   };
 }

@@ -10,8 +10,8 @@ import {
   summarizeRecord,
   type TransformerPassage,
 } from '#libs/engine/index.js';
-import { Complex } from '../support/complex.js';
 import { chance } from '../support/chance.js';
+import { Complex } from '../support/complex.js';
 import { madeRecord } from '../support/made-record.js';
 import { runs, SEED } from '../support/soak.js';
 

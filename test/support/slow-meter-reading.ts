@@ -24,18 +24,19 @@ export class SlowRefusal extends Error {}
  */
 export function readSlowly(bytes: Uint8Array, dialect: Dialect): { intervalS: number; rows: Map<number, SlowRow> } {
   const { data, errors } = Papa.parse<string[]>(textOf(bytes), { delimiter: dialect.delimiter, newline: '\n' });
-  const broken = errors.find(({ type }) => type === 'Quotes');
-  if (broken !== undefined) throw new SlowRefusal(broken.message);
   const table = data.map((cells) => cells.map((cell) => cell.trim()));
   const headerAt = table.findIndex(
-    (cells) => cells.some((cell) => UNIT.test(cell)) && !cells.some((cell) => /^\d/.test(cell)),
+    (cells) =>
+      cells.some((cell) => UNIT.test(cell)) && !cells.some((cell) => /^[\d.,]+$|^\d+[-/.]\d+[-/.]\d/.test(cell)),
   );
   if (headerAt < 0) throw new SlowRefusal('no header');
-  const header = table[headerAt]!;
+  const broken = errors.find(({ type, row = 0 }) => type === 'Quotes' && row >= headerAt);
+  if (broken !== undefined) throw new SlowRefusal(broken.message);
+  const header = table[headerAt]!.map((name) => name.normalize('NFD').replace(/\p{M}/gu, ''));
   const columns = columnsOf(header, table.slice(headerAt + 1), dialect);
   const body = table
     .slice(headerAt + 1)
-    .filter((cells) => cells.some((cell) => cell !== '') && cells.join('\n') !== header.join('\n'));
+    .filter((cells) => cells.some((cell) => cell !== '') && cells.join('\n') !== table[headerAt]!.join('\n'));
   const read = body.map((cells) => rowOf(cells, header, columns, dialect));
   return onGrid(read, columns, dialect);
 }
@@ -63,19 +64,21 @@ interface Columns {
   signed: Column | null;
 }
 
-const UNIT = /(?:^|[^a-z])([kM]?)(W|var)(h?)(?:$|[^a-z])/i;
+const UNIT = /(?:(?<![a-z])|(?=[kM]))([kM]?)(W|var)(h?)(?:$|[^a-z])/i;
 
 function columnsOf(header: string[], body: string[][], { dates }: Dialect): Columns {
   const find = (fits: (name: string) => boolean) => {
-    const found = header.flatMap((name, at) => (UNIT.test(name) && fits(name) ? [at] : []));
+    const found = header.flatMap((name, at) => (fits(name) ? [at] : []));
     if (found.length > 1) throw new SlowRefusal(`${found.length} columns for one quantity`);
     return found.length === 0 ? null : columnOf(header[found[0]!]!, found[0]!);
   };
   const isReactive = (name: string) => /reactive|var/i.test(name);
-  const kw = find((name) => !isReactive(name));
-  const lagging = find((name) => isReactive(name) && /lag/i.test(name));
-  const leading = find((name) => isReactive(name) && /lead/i.test(name));
-  const signed = find((name) => isReactive(name) && !/lag|lead/i.test(name));
+  const kw =
+    find((name) => UNIT.test(name) && !isReactive(name)) ??
+    find((name) => /usage|active/i.test(name) && !isReactive(name));
+  const lagging = find((name) => /lag/i.test(name));
+  const leading = find((name) => /lead/i.test(name));
+  const signed = find((name) => UNIT.test(name) && isReactive(name) && !/lag|lead/i.test(name));
   if (kw === null || (lagging ?? signed) === null) throw new SlowRefusal('a column is missing');
   if (lagging !== null && signed !== null) throw new SlowRefusal('a column too many');
   const first = body.find((cells) => cells.some((cell) => isStamp(cell, dates)));
@@ -121,8 +124,8 @@ function rowOf(cells: string[], header: string[], columns: Columns, dialect: Dia
 function stampOf(text: string, order: 'ymd' | 'dmy') {
   const shape =
     order === 'ymd'
-      ? /^(\d{4})([-/.]?)(\d{1,2})\2(\d{1,2})(?:\s*,\s*|\s+|T)(\d{1,2})[:.h](\d{2})(?:[:.](\d{2})(?:[.,]0+)?)?\s*(Z|[+-]\d\d:?\d\d)?$/i
-      : /^(\d{1,2})([-/.])(\d{1,2})\2(\d{4})(?:\s*,\s*|\s+|T)(\d{1,2})[:.h](\d{2})(?:[:.](\d{2})(?:[.,]0+)?)?\s*(Z|[+-]\d\d:?\d\d)?$/i;
+      ? /^(\d{4})([-/.]?)(\d{1,2})\2(\d{1,2})(?:\s*,\s*|\s+|T)(\d{1,2})[:.h](\d{2})(?:[:.](\d{2})(?:[.,]0+)?)?\s*(Z|[+-]\d\d(?::?\d\d)?)?$/i
+      : /^(\d{1,2})([-/.])(\d{1,2})\2(\d{4})(?:\s*,\s*|\s+|T)(\d{1,2})[:.h](\d{2})(?:[:.](\d{2})(?:[.,]0+)?)?\s*(Z|[+-]\d\d(?::?\d\d)?)?$/i;
   const parts = shape.exec(text);
   if (parts === null) throw new SlowRefusal(`stamp ${text}`);
   const [, one, , two, three, hour, minute, second = '0', zone] = parts;

@@ -1,6 +1,6 @@
+import { Readable } from 'node:stream';
 import { Controller, Get, Res } from '@nestjs/common';
 import type { FastifyReply } from 'fastify';
-import { Readable } from 'node:stream';
 import { Public } from '../public.js';
 import { demoLoad } from './demo-load.js';
 import { DEMO_SITE } from './demo-site.js';

@@ -1,6 +1,6 @@
+import { Readable } from 'node:stream';
 import { Controller, Delete, Get, Headers, HttpCode, Inject, Param, Post, Res } from '@nestjs/common';
 import type { FastifyReply } from 'fastify';
-import { Readable } from 'node:stream';
 import type { Jobs } from '#libs/jobs/jobs.js';
 import type { Job } from '#libs/store/job.js';
 import { pathNumber } from '../path-number.js';

@@ -6,6 +6,7 @@ import {
   planBank,
   type Result,
   type Site,
+  withRobustness,
   type ZoneTable,
 } from '#libs/engine/index.js';
 import { portWatch } from '#libs/jobs/pool/port-watch.js';
@@ -41,7 +42,8 @@ export function computePlan({ task, port }: { task: PlanTask; port: MessagePort 
     const { site, record, zone } = task;
     if (recordHash(record) !== task.recordHash) throw new Error('the stored record is not the one that was hashed');
     const watch = portWatch(port);
-    const computed = task.kind === 'plan' ? planBank(site, record, zone, watch) : assessBank(site, record, zone, watch);
+    const judged = task.kind === 'plan' ? planBank(site, record, zone, watch) : assessBank(site, record, zone, watch);
+    const computed = withRobustness(judged);
     const outcome = { ...computed, result: putInWords(computed.result) };
     return {
       result: outcome.result,

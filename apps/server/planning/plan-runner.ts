@@ -11,8 +11,8 @@ import { noSite } from '#libs/store/sites.js';
 import type { Store } from '#libs/store/store.js';
 import { StoredSite } from '#libs/store/stored-site.js';
 import type { PlanTask, PlanValue } from './compute-plan.js';
-import { contentOf } from './planning.js';
 import type { FrozenPlan } from './plan-request.js';
+import { contentOf } from './planning.js';
 
 /**
  * Does the jobs of planning: computes in a worker thread, then writes revision, proposal and the job's end at once.

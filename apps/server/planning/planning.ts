@@ -1,5 +1,5 @@
-import { Inject, Injectable } from '@nestjs/common';
 import { createHash } from 'node:crypto';
+import { Inject, Injectable } from '@nestjs/common';
 import { frozenSite } from '#libs/contract/frozen-site.js';
 import { planContent } from '#libs/contract/plan-content.js';
 import type { PlanRequest } from '#libs/contract/plan-request-schema.js';

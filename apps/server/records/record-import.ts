@@ -1,5 +1,5 @@
-import { Injectable } from '@nestjs/common';
 import { randomUUID } from 'node:crypto';
+import { Injectable } from '@nestjs/common';
 import { Question } from '#libs/contract/question.js';
 import { WorkerPool } from '#libs/jobs/pool/worker-pool.js';
 import { insertRecord } from '#libs/store/records.js';

@@ -1,13 +1,13 @@
 import { Controller, Delete, Get, HttpCode, Param, Post, Req, Res } from '@nestjs/common';
 import type { FastifyReply, FastifyRequest } from 'fastify';
 import { InputProblem } from '#libs/engine/index.js';
+import { recordColumns } from '#libs/meter-files/record-columns.js';
 import { readRecord } from '#libs/store/records.js';
 import { Revision } from '#libs/store/revision.js';
 import { noSite } from '#libs/store/sites.js';
 import { Store } from '#libs/store/store.js';
 import { StoredRecord } from '#libs/store/stored-record.js';
 import { StoredSite } from '#libs/store/stored-site.js';
-import { recordColumns } from '#libs/meter-files/record-columns.js';
 import { Public } from '../public.js';
 import { findSite } from '../sites/find-site.js';
 import { findRecord } from './find-record.js';

@@ -1,4 +1,3 @@
-import type { FastifyRequest } from 'fastify';
 import { createHash, randomUUID } from 'node:crypto';
 import { createWriteStream } from 'node:fs';
 import { mkdir, rm } from 'node:fs/promises';
@@ -6,6 +5,7 @@ import type { IncomingMessage } from 'node:http';
 import { join } from 'node:path';
 import { type Readable, Transform } from 'node:stream';
 import { pipeline } from 'node:stream/promises';
+import type { FastifyRequest } from 'fastify';
 import { InputProblem } from '#libs/engine/index.js';
 import { RefusedRequest } from '../refused-request.js';
 

@@ -1,6 +1,6 @@
+import { randomUUID } from 'node:crypto';
 import { Body, Controller, Delete, Get, Headers, HttpCode, Param, Post, Put, Res } from '@nestjs/common';
 import type { FastifyReply } from 'fastify';
-import { randomUUID } from 'node:crypto';
 import { readSiteWithMathjs } from '#libs/contract/read-site-with-mathjs.js';
 import { siteSchema } from '#libs/contract/site-schema.js';
 import { latestRevisions } from '#libs/store/revisions.js';

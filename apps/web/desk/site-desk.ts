@@ -5,11 +5,12 @@ import type { RecordShown, RevisionHeadShown, RevisionShown, SiteShown } from '.
 import { withValueAt } from '../field/document-path.js';
 import { clockNow } from './clock-now.js';
 import { InputRefused } from './desk-link.js';
-import { type DeskState, isChanged, NOTHING_YET, studiedDocument } from './desk-state.js';
+import { type DeskState, isChanged, NOTHING_YET, staleFrom, studiedDocument } from './desk-state.js';
 import { dropDraft, keepDraft, readDraft } from './draft.js';
 import { EngineDesk } from './engine-desk.js';
 import { followJob, type JobEnd, keptJob } from './follow-job.js';
-import type { Look, LookAsked, Picks, RatioRow, Trace } from './look.js';
+import type { Firmness, Look, LookAsked, Picks, Trace } from './look.js';
+import { mergedLook } from './merged-look.js';
 
 /** How long to wait for the first plan of a site whose plan is being made elsewhere [ms]. */
 const FIRST_PLAN_MS = 1500;
@@ -150,10 +151,6 @@ export class SiteDesk {
     this.#edited();
   }
 
-  ratios(): Promise<RatioRow[]> {
-    return this.#engine === null ? Promise.resolve([]) : this.#engine.ratios(this.#asked());
-  }
-
   trace(): Promise<Trace> | null {
     return this.#engine?.trace() ?? null;
   }
@@ -236,6 +233,7 @@ export class SiteDesk {
     };
     this.#engine = new EngineDesk(opened, {
       looked: (look, asked, tookMs) => this.#looked(look, asked, tookMs),
+      firm: (firm, asked) => this.#firm(firm, asked),
       failed: (error) => this.#failed(error),
     });
     this.#look(true);
@@ -252,20 +250,23 @@ export class SiteDesk {
   }
 
   #looked(look: Look, asked: LookAsked, tookMs: number): void {
-    if (look.depth === 'full') this.#full = look;
-    const full = this.#full;
-    const { bank, requirement, control, operation, verdict } = look.result;
-    const merged =
-      look.depth === 'full' || full === null
-        ? look
-        : { ...full, depth: look.depth, result: { ...full.result, bank, requirement, control, operation, verdict } };
+    if (look.depth === 'full') {
+      this.#full = look;
+      if (staleFrom(this.#state) !== null || this.#state.kept === null) void this.#engine?.firm(asked);
+    }
     this.#set({
-      look: merged,
+      look: mergedLook(look, this.#full),
       charts: { ...this.#state.charts, ...look.charts },
       fault: null,
       problems: [],
       ...(asked.depth === 'quick' ? { followedMs: tookMs } : {}),
     });
+  }
+
+  #firm(firm: Firmness, asked: LookAsked): void {
+    if (this.#full === null || JSON.stringify(asked.document) !== JSON.stringify(studiedDocument(this.#state))) return;
+    this.#full = { ...this.#full, result: { ...this.#full.result, ...firm } };
+    this.#set({ look: this.#full });
   }
 
   #failed(error: Error): void {

@@ -131,6 +131,11 @@ function pointOf(remark: Remark): Point {
 }
 
 function rangeWords({ figure, low, high }: NonNullable<Remark['effect']>): string {
+  const duty = /^duties\.(.+)$/.exec(figure)?.[1];
+  if (duty !== undefined) {
+    const percent = { low: Math.round(100 * low), high: Math.round(100 * high) };
+    return `${duty}: ${formatRange(percent, '%')} of its limit`;
+  }
   if (/kvar$/i.test(figure)) return `± ${formatQuantity(Math.abs(high - low) / 2, 'kvar')}`;
   return formatRange({ low, high }, '', 'computed');
 }

@@ -43,7 +43,7 @@ export function NetworkSheet() {
         {headline(result, charts)}
       </Headline>
       {charts === undefined ? null : <Pictures charts={charts} />}
-      {bankOf(state) === null ? null : <RatioTable isWide />}
+      {bankOf(state) === null ? null : <RatioTable />}
     </>
   );
 }

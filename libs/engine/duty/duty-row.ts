@@ -14,6 +14,8 @@ export interface Duty {
   levelKvar: number | null;
   corner: Corner | null;
   orderH: number | null;
+  /** bus, in a network of several */
+  bus?: string;
   source: string;
   /** null: not judged */
   verdict: Verdict | null;
@@ -30,6 +32,8 @@ export interface Place {
   levelKvar: number | null;
   corner: Corner | null;
   orderH: number | null;
+  /** bus, in a network of several */
+  bus?: string;
 }
 
 /** What a row is about. */

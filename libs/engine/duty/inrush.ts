@@ -1,5 +1,8 @@
 import type { Bank } from '../layout/bank.js';
 import { ratedA, stageOhm } from '../layout/stage.js';
+import type { SeriesOhm } from '../supply/supply-path.js';
+import { closingPeak } from './closing-circuit.js';
+import type { ClosingCircuit, SeriesBranch } from './loop-impedance.js';
 import { CAPACITOR_RULES, type RuleSet } from './rules.js';
 
 /** Peak current of closing one stage of a group, closed forms. */
@@ -10,7 +13,7 @@ export interface InrushStage {
   /** null where the stage is the only one */
   ontoBankPeakA: number | null;
   ontoBankHz: number | null;
-  /** exact peak of the linear circuit; null until it is computed */
+  /** exact peak of the linear circuit at the worst closing instant, alone or onto any level [A]; null in a quick look */
   worstPeakA: number | null;
   limitPeakA: number | null;
 }
@@ -90,4 +93,86 @@ function inrushLimitA(switchPeakA: number | null, ownA: number, rules: RuleSet):
   const { inrushRatio } = CAPACITOR_RULES[rules];
   const limits = [inrushRatio === null ? null : inrushRatio * ownA, switchPeakA].filter((limit) => limit !== null);
   return limits.length === 0 ? null : Math.min(...limits);
+}
+
+/** What the exact solution needs of the site. */
+export interface ClosingSite {
+  nominalV: number;
+  frequencyHz: number;
+  /** R and X of the supply at its greatest fault level, per phase [Ω] */
+  supplyOhm: SeriesOhm;
+  /** every count vector the bank can stand at */
+  vectors: readonly Int32Array[];
+}
+
+/** Exact peaks of closing one stage of a group. */
+export interface ExactInrush {
+  /** onto the supply alone [A] */
+  singlePeakA: number;
+  /** the greatest, alone or onto any level at which a stage of the group is left [A] */
+  worstPeakA: number;
+}
+
+/** One closing of a stage: alone, or onto what a count vector has connected. */
+export interface Closing {
+  circuit: ClosingCircuit;
+  /** connected stages per group before the closing */
+  vector: Int32Array;
+}
+
+/**
+ * Every closing of one stage of a group: alone first, then onto every level at which one is left. The inductance between
+ * stages counts once, before the closing stage, as in the closed form; damping loads and harmonics are left out.
+ * @param bank the bank
+ * @param index the closing stage's group
+ * @param site voltage, frequency, supply, count vectors
+ * @returns circuits per phase
+ * @source method-inrush
+ */
+export function closings(bank: Bank, index: number, site: ClosingSite): Closing[] {
+  const omega = 2 * Math.PI * site.frequencyHz;
+  const branches = bank.groups.map((group) => {
+    const ohm = stageOhm(group);
+    const farad = 1 / (omega * ohm.capacitiveOhm);
+    return { rOhm: ohm.resistanceOhm, inductanceH: ohm.inductiveOhm / omega, capacitanceF: farad };
+  });
+  const own = branches[index]!;
+  const ontoOwn = { ...own, inductanceH: own.inductanceH + bank.interStageUh * 1e-6 };
+  const supply = {
+    sourceOhm: site.supplyOhm.rOhm,
+    sourceH: site.supplyOhm.xOhm / omega,
+    crestV: (Math.SQRT2 * site.nominalV) / Math.sqrt(3),
+    frequencyHz: site.frequencyHz,
+  };
+  const onto = site.vectors.flatMap((vector): Closing[] => {
+    if (vector[index]! >= bank.groups[index]!.count) return [];
+    const connected = branches.flatMap((branch, g) => (vector[g]! > 0 ? [scaledBranch(branch, vector[g]!)] : []));
+    return connected.length === 0 ? [] : [{ circuit: { ...supply, connected, closing: ontoOwn }, vector }];
+  });
+  const alone = { circuit: { ...supply, connected: [], closing: own }, vector: new Int32Array(bank.groups.length) };
+  return [alone, ...onto];
+}
+
+/**
+ * Exact peak of closing one stage of a group at the worst instant: alone, and onto every level.
+ * @param bank the bank
+ * @param index the closing stage's group
+ * @param site voltage, frequency, supply, count vectors
+ * @returns peaks [A], or null where the circuit could not be solved
+ * @source method-inrush
+ */
+export function exactInrush(bank: Bank, index: number, site: ClosingSite): ExactInrush | null {
+  const peaksA = closings(bank, index, site).map(({ circuit }) => closingPeak(circuit).peakA);
+  const worstPeakA = peaksA.reduce((worst, peakA) => Math.max(worst, peakA));
+  // A circuit far from any that is built (a reactor of nothing but resistance) has modes that are not found.
+  return Number.isFinite(worstPeakA) ? { singlePeakA: peaksA[0]!, worstPeakA } : null;
+}
+
+// Equal branches in parallel are one branch of their sum.
+function scaledBranch(branch: SeriesBranch, count: number): SeriesBranch {
+  return {
+    rOhm: branch.rOhm / count,
+    inductanceH: branch.inductanceH / count,
+    capacitanceF: branch.capacitanceF * count,
+  };
 }

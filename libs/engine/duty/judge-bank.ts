@@ -7,14 +7,17 @@ import {
   type NearPeak,
   type NetworkSummary,
   nearestPeak,
+  strongestInto,
   summarizeNetwork,
 } from '../network/network-check.js';
 import type { NetworkModel } from '../network/network-model.js';
 import { PeakFinder } from '../network/peaks.js';
 import type { Supply } from '../supply/supply.js';
+import { pathImpedanceInto } from '../supply/supply-path.js';
 import { type ChargeStage, chargeStages } from './charge.js';
 import { type Duty, DutyRow, NEAR_RATIO } from './duty-row.js';
-import { type InrushStage, inrushStages } from './inrush.js';
+import { type ExactInrush, exactInrush, type InrushStage, inrushStages } from './inrush.js';
+import type { LimitChoice } from './limit-editions.js';
 import { NetworkDuties, networkLimits } from './network-duties.js';
 import { CAPACITOR_RULES, graver, type RuleSet, type Verdict } from './rules.js';
 import { type DutyVoltages, StageDuties } from './stage-duties.js';
@@ -25,6 +28,8 @@ export interface JudgeBasis {
   frequencyHz: number;
   voltages: DutyVoltages;
   emcClass: 1 | 2 | 3;
+  /** the rule set's first edition where absent */
+  limits?: LimitChoice;
   supply: Supply;
   loads: Loads;
   reconnectDelayS: number;
@@ -76,17 +81,19 @@ export function judgeBank(model: NetworkModel, bank: Bank, levels: Level[], basi
     for (const stage of stages) stage.take(flow);
   });
   const charge = chargeStages(bank, basis.rules, basis.frequencyHz, basis.reconnectDelayS);
+  const exact = exactInrushes(model, bank, levels, basis);
   const inrush = inrushStages(bank, {
     nominalV: basis.voltages.nominalV,
     frequencyHz: basis.frequencyHz,
     shortCircuitMva: empty.shortCircuitMva,
     rules: basis.rules,
-  });
+  }).map((stage, g) => ({ ...stage, worstPeakA: exact[g]?.worstPeakA ?? null }));
   const duties = [
     ...stages.flatMap((stage, g) => [
       ...stage.duties(),
       ...dischargeDuty(bank, charge[g]!, basis.rules),
       ...inrushDuty(bank, inrush[g]!, basis.rules),
+      ...exactInrushDuty(bank, inrush[g]!, exact[g] ?? null, basis.rules),
     ]),
     ...bankDuties.duties(),
   ];
@@ -117,7 +124,7 @@ function dischargeDuty(bank: Bank, charge: ChargeStage, rules: RuleSet): Duty[] 
 }
 
 /**
- * The inrush row of a group, where it has a limit.
+ * The inrush row of a group by the closed forms, where it has a limit.
  * @param bank the bank
  * @param inrush its closed forms
  * @param rules rule set
@@ -125,22 +132,87 @@ function dischargeDuty(bank: Bank, charge: ChargeStage, rules: RuleSet): Duty[] 
  * @source method-limits
  */
 export function inrushDuty(bank: Bank, inrush: InrushStage, rules: RuleSet): Duty[] {
-  if (inrush.limitPeakA === null) return [];
   const peakA = Math.max(inrush.singlePeakA, inrush.ontoBankPeakA ?? 0);
-  const limitA = inrush.limitPeakA;
-  const source = bank.groups[inrush.group]!.switchPeakA === limitA ? 'site' : CAPACITOR_RULES[rules].source;
-  const row = new DutyRow({
-    name: 'inrush current',
-    group: inrush.group,
-    unit: 'A',
-    source,
-    nearRatio: NEAR_RATIO.other,
+  return inrushRow(bank, inrush, { name: 'inrush current', peakA, singleA: inrush.singlePeakA, rules });
+}
+
+function exactInrushes(model: NetworkModel, bank: Bank, levels: Level[], basis: JudgeBasis): (ExactInrush | null)[] {
+  return bank.groups.map((_, g) =>
+    exactInrush(bank, g, {
+      nominalV: basis.voltages.nominalV,
+      frequencyHz: basis.frequencyHz,
+      supplyOhm: fundamentalOhm(model),
+      vectors: levels.flatMap(({ vectors }) => vectors),
+    }),
+  );
+}
+
+/**
+ * The rows of exact inrush, where there is a limit; without one nothing is solved.
+ * @param model the network without the bank
+ * @param bank the bank
+ * @param levels its levels
+ * @param basis rules, voltages, supply
+ * @returns rows
+ * @source method-inrush
+ */
+export function closingDuties(model: NetworkModel, bank: Bank, levels: Level[], basis: JudgeBasis): Duty[] {
+  const closed = inrushStages(bank, {
+    nominalV: basis.voltages.nominalV,
+    frequencyHz: basis.frequencyHz,
+    shortCircuitMva: summarizeNetwork(model, []).shortCircuitMva,
+    rules: basis.rules,
   });
+  if (closed.every(({ limitPeakA }) => limitPeakA === null)) return [];
+  const exact = exactInrushes(model, bank, levels, basis);
+  return closed.flatMap((stage, g) => exactInrushDuty(bank, stage, exact[g] ?? null, basis.rules));
+}
+
+/**
+ * The rows of the discharge resistors that are stated.
+ * @param bank the bank
+ * @param basis rules, frequency, reconnection delay
+ * @returns rows
+ * @source method-limits
+ */
+export function dischargeDuties(bank: Bank, basis: JudgeBasis): Duty[] {
+  const charge = chargeStages(bank, basis.rules, basis.frequencyHz, basis.reconnectDelayS);
+  return charge.flatMap((stage) => dischargeDuty(bank, stage, basis.rules));
+}
+
+function exactInrushDuty(bank: Bank, inrush: InrushStage, exact: ExactInrush | null, rules: RuleSet): Duty[] {
+  if (exact === null) return [];
+  const { worstPeakA: peakA, singlePeakA: singleA } = exact;
+  return inrushRow(bank, inrush, { name: 'inrush current, exact', peakA, singleA, rules });
+}
+
+function inrushRow(
+  bank: Bank,
+  inrush: InrushStage,
+  { name, peakA, singleA, rules }: { name: string; peakA: number; singleA: number; rules: RuleSet },
+): Duty[] {
+  const limitA = inrush.limitPeakA;
+  if (limitA === null) return [];
+  const source = bank.groups[inrush.group]!.switchPeakA === limitA ? 'site' : CAPACITOR_RULES[rules].source;
+  const row = new DutyRow({ name, group: inrush.group, unit: 'A', source, nearRatio: NEAR_RATIO.other });
   row.take(peakA, limitA, { levelKvar: null, corner: null, orderH: null });
   const duty = row.duty()!;
   // Over the limit only because of a customary inductance between stages: reactors or an inrush-limiting switch are due.
-  const assumed = !bank.interStageGiven && inrush.singlePeakA <= limitA;
+  const assumed = !bank.interStageGiven && singleA <= limitA;
   return [duty.verdict === 'avoid' && assumed ? { ...duty, verdict: 'watch' } : duty];
+}
+
+/**
+ * Supply at its strongest, seen from the bank's bus at the fundamental, loads and capacitors left out.
+ * @param model the network without the bank
+ * @returns R and X per phase [Ω]
+ * @source method-inrush
+ */
+export function fundamentalOhm(model: NetworkModel): { rOhm: number; xOhm: number } {
+  const z = new Float64Array(2);
+  if (model.nodal === null) pathImpedanceInto(model.corners.networks[1]!.path, 1, z);
+  else strongestInto(model, z);
+  return { rOhm: z[0]!, xOhm: z[1]! };
 }
 
 /**

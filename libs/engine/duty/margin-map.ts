@@ -2,8 +2,9 @@ import type { Bank } from '../layout/bank.js';
 import type { Level } from '../layout/levels.js';
 import { bankModel, eachFlow } from '../network/flow.js';
 import type { NetworkModel } from '../network/network-model.js';
+import { type LimitChoice, limitChoice } from './limit-editions.js';
 import type { RuleSet } from './rules.js';
-import { voltageLimits } from './voltage-limits.js';
+import { chosenVoltageLimits } from './voltage-limits.js';
 
 /** Harmonic voltage as a share of its own limit, worst over every corner. */
 export interface MarginMap {
@@ -28,9 +29,10 @@ export function marginMap(
   model: NetworkModel,
   bank: Bank,
   levels: Level[],
-  basis: { rules: RuleSet; voltages: { nominalV: number }; emcClass: 1 | 2 | 3 },
+  basis: { rules: RuleSet; voltages: { nominalV: number }; emcClass: 1 | 2 | 3; limits?: LimitChoice },
 ): MarginMap {
-  const limits = voltageLimits(basis.rules, basis.voltages.nominalV, basis.emcClass);
+  const choice = basis.limits ?? limitChoice(basis.rules, undefined);
+  const limits = chosenVoltageLimits(basis.voltages.nominalV, basis.emcClass, choice);
   const judged = [...model.excitation.ordersH.entries()].flatMap(([i, orderH]) => {
     const limitPct = limits.orderPct(orderH);
     return limitPct === null ? [] : [{ i, orderH, limitPct }];
@@ -40,7 +42,7 @@ export function marginMap(
   eachFlow(model, bankModel(model, bank, levels), (flow) => {
     const row = sharePct[flow.level]!;
     for (const [k, { i, limitPct }] of judged.entries()) {
-      row[k] = Math.max(row[k]!, (1e4 * flow.voltageV[i]!) / phaseV / limitPct);
+      for (const { voltageV } of flow.buses) row[k] = Math.max(row[k]!, (1e4 * voltageV[i]!) / phaseV / limitPct);
     }
   });
   return { levelsKvar: levels.map((level) => level.levelKvar), ordersH: judged.map(({ orderH }) => orderH), sharePct };

@@ -1,31 +1,34 @@
-import type { Flow } from '../network/flow.js';
+import type { Flow } from '../network/bus-flow.js';
 import type { NetworkModel } from '../network/network-model.js';
-import { type CurrentLimits, currentLimits } from './current-limits.js';
+import { type CurrentLimits, chosenCurrentLimits } from './current-limits.js';
 import { type Duty, DutyRow, NEAR_RATIO, type Place, ratioVerdict } from './duty-row.js';
+import { type LimitChoice, limitChoice } from './limit-editions.js';
 import type { RuleSet, Verdict } from './rules.js';
-import { type VoltageLimits, voltageLimits } from './voltage-limits.js';
+import { chosenVoltageLimits, type VoltageLimits } from './voltage-limits.js';
 
 /** A limit exceeded without the bank already counts against the bank only beyond this share of the limit. */
 const BASELINE_SHARE = 0.01;
 
 /** The same quantities with the bank out, per network. */
 interface Baseline {
-  distortionPct: number;
+  /** per bus */
+  distortionPct: number[];
   currentPct: number;
-  voltagePct: Float64Array;
+  /** per bus and order */
+  voltagePct: Float64Array[];
   sourcePct: Float64Array;
 }
 
 /** Limits of the network at the bus. */
 export interface NetworkLimits {
-  voltage: VoltageLimits;
-  /** null where the rule set has no current limits or no load current is known */
-  current: CurrentLimits | null;
+  voltage: VoltageLimits<number | null>;
+  /** null where the edition has no current limits or no load current is known */
+  current: CurrentLimits<number | null> | null;
 }
 
 /**
  * The limits that apply at the bus; I_sc/I_L is taken at the least fault level.
- * @param basis rules, bus voltage, class, least fault level [MVA] and I_L [A]
+ * @param basis rules, edition, bus voltage, class, least fault level [MVA] and I_L [A]
  * @returns limits with their editions
  * @source ieee-519-2022, iec-61000-2-4
  */
@@ -33,13 +36,15 @@ export function networkLimits(basis: {
   rules: RuleSet;
   nominalV: number;
   emcClass: 1 | 2 | 3;
+  limits?: LimitChoice;
   shortCircuitMinMva: number;
   loadA: number;
 }): NetworkLimits {
   const shortCircuitA = (basis.shortCircuitMinMva * 1e6) / (Math.sqrt(3) * basis.nominalV);
+  const choice = basis.limits ?? limitChoice(basis.rules, undefined);
   return {
-    voltage: voltageLimits(basis.rules, basis.nominalV, basis.emcClass),
-    current: basis.rules === 'ieee' && basis.loadA > 0 ? currentLimits(shortCircuitA / basis.loadA) : null,
+    voltage: chosenVoltageLimits(basis.nominalV, basis.emcClass, choice),
+    current: basis.loadA > 0 ? chosenCurrentLimits(shortCircuitA / basis.loadA, choice) : null,
   };
 }
 
@@ -82,9 +87,9 @@ export class NetworkDuties {
   #takeBaseline(flow: Flow): void {
     if (this.#baselines[flow.corner.network] !== undefined) return;
     this.#baselines[flow.corner.network] = {
-      distortionPct: flow.voltageDistortionPct,
+      distortionPct: flow.buses.map((bus) => bus.voltageDistortionPct),
       currentPct: flow.currentDistortionPct,
-      voltagePct: flow.voltageV.map((v) => this.#voltagePct(v)),
+      voltagePct: flow.buses.map((bus) => bus.voltageV.map((v) => this.#voltagePct(v))),
       sourcePct: flow.sourceA.map((a) => this.#sourcePct(a)),
     };
   }
@@ -92,31 +97,43 @@ export class NetworkDuties {
   #takeLevel(flow: Flow): void {
     const baseline = this.#baselines[flow.corner.network]!;
     const place: Place = { levelKvar: flow.levelKvar, corner: flow.corner.corner, orderH: null };
-    const { voltage, current } = this.#limits;
+    for (let bus = 0; bus < flow.buses.length; bus++) this.#takeVoltages(flow, bus, baseline, this.#at(place, bus));
+    this.#takeCurrents(flow, baseline, place);
+  }
+
+  // The name of the bus is worth saying only where there are several.
+  #at(place: Place, bus: number): Place {
+    return this.#model.buses.length === 1 ? place : { ...place, bus: this.#model.buses[bus]! };
+  }
+
+  #takeVoltages(flow: Flow, bus: number, baseline: Baseline, place: Place): void {
+    const { voltage } = this.#limits;
+    const { voltageV, voltageDistortionPct } = flow.buses[bus]!;
     this.#takeAgainst(this.#rows.distortion, place, {
-      value: flow.voltageDistortionPct,
+      value: voltageDistortionPct,
       limit: voltage.distortionPct,
-      without: baseline.distortionPct,
+      without: baseline.distortionPct[bus]!,
     });
     for (let i = 0; i < flow.ordersH.length; i++) {
       const orderH = flow.ordersH[i]!;
       const limit = voltage.orderPct(orderH);
-      if (limit !== null) {
-        const value = this.#voltagePct(flow.voltageV[i]!);
-        this.#takeAgainst(this.#rows.voltage, { ...place, orderH }, { value, limit, without: baseline.voltagePct[i]! });
-      }
-      if (current === null) continue;
-      this.#takeAgainst(
-        this.#rows.current,
-        { ...place, orderH },
-        {
-          value: this.#sourcePct(flow.sourceA[i]!),
-          limit: current.orderPct(orderH),
-          without: baseline.sourcePct[i]!,
-        },
-      );
+      if (limit === null) continue;
+      const value = this.#voltagePct(voltageV[i]!);
+      const without = baseline.voltagePct[bus]![i]!;
+      this.#takeAgainst(this.#rows.voltage, { ...place, orderH }, { value, limit, without });
     }
+  }
+
+  #takeCurrents(flow: Flow, baseline: Baseline, place: Place): void {
+    const { current } = this.#limits;
     if (current === null || flow.ordersH.length === 0) return;
+    for (let i = 0; i < flow.ordersH.length; i++) {
+      const orderH = flow.ordersH[i]!;
+      const limit = current.orderPct(orderH);
+      if (limit === null) continue;
+      const value = this.#sourcePct(flow.sourceA[i]!);
+      this.#takeAgainst(this.#rows.current, { ...place, orderH }, { value, limit, without: baseline.sourcePct[i]! });
+    }
     this.#takeAgainst(this.#rows.currentDistortion, place, {
       value: flow.currentDistortionPct,
       limit: current.totalPct,
@@ -124,8 +141,10 @@ export class NetworkDuties {
     });
   }
 
-  #takeAgainst(row: DutyRow, place: Place, met: { value: number; limit: number; without: number }): void {
-    row.take(met.value, met.limit, place, (ratio) => this.#judge(ratio, met));
+  #takeAgainst(row: DutyRow, place: Place, met: { value: number; limit: number | null; without: number }): void {
+    const { limit } = met;
+    if (limit === null) row.takeUnjudged(met.value, place);
+    else row.take(met.value, limit, place, (ratio) => this.#judge(ratio, { ...met, limit }));
   }
 
   #judge(ratio: number, met: { value: number; limit: number; without: number }): Verdict {

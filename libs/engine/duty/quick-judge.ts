@@ -1,10 +1,20 @@
 import type { Bank } from '../layout/bank.js';
 import { bankLevels } from '../layout/levels.js';
 import { bankModel, eachFlow } from '../network/flow.js';
-import { summarizeNetwork } from '../network/network-check.js';
+import { hasNearPeak, summarizeNetwork } from '../network/network-check.js';
 import type { NetworkModel } from '../network/network-model.js';
+import { PeakFinder } from '../network/peaks.js';
+import type { Duty } from './duty-row.js';
 import { inrushStages } from './inrush.js';
-import { inrushDuty, type JudgeBasis, networkIsUnknown, plainSharePct } from './judge-bank.js';
+import {
+  closingDuties,
+  dischargeDuties,
+  inrushDuty,
+  type JudgeBasis,
+  networkIsUnknown,
+  PEAK_REACH_H,
+  plainSharePct,
+} from './judge-bank.js';
 import { NetworkDuties, networkLimits } from './network-duties.js';
 import { graver, type Verdict } from './rules.js';
 import { StageDuties } from './stage-duties.js';
@@ -15,6 +25,8 @@ export interface QuickJudgement {
   voltages: Verdict;
   /** worst verdict of all duties; the full judgement adds the peaks of |Z| and is never milder */
   verdict: Verdict;
+  /** the duties that were looked at */
+  duties: Duty[];
 }
 
 /**
@@ -45,5 +57,43 @@ export function quickJudge(model: NetworkModel, bank: Bank, basis: JudgeBasis): 
   return {
     voltages: worst(duties.filter((duty) => duty.name.startsWith('capacitor voltage'))),
     verdict: graver(worst(duties), watched ? 'watch' : 'clear'),
+    duties,
   };
+}
+
+/** The verdict of the full judgement, without its figures. */
+export interface FirmVerdict {
+  verdict: Verdict;
+  /** the judged duty with the largest ratio, or null */
+  worst: Duty | null;
+  /** every duty that was looked at */
+  duties: Duty[];
+}
+
+/**
+ * The verdict the full judgement would give, found as cheaply as it can be: peaks are looked for only until one is near
+ * an order present, and not at all where a limit is passed already. For moving an input until the verdict changes.
+ * @param model the network without the bank
+ * @param bank the bank
+ * @param basis rules, voltages, supply, loads, reconnection delay
+ * @returns verdict and the worst duty
+ * @source method-limits
+ */
+export function firmVerdict(model: NetworkModel, bank: Bank, basis: JudgeBasis): FirmVerdict {
+  const quick = quickJudge(model, bank, basis);
+  const levels = bankLevels(bank, basis.voltages.nominalV);
+  const duties = [...quick.duties, ...closingDuties(model, bank, levels, basis), ...dischargeDuties(bank, basis)];
+  const worst = duties.reduce<Duty | null>(
+    (most, duty) => ((duty.ratio ?? -1) > (most?.ratio ?? -1) ? duty : most),
+    null,
+  );
+  const verdict = duties.reduce<Verdict>((gravest, duty) => graver(gravest, duty.verdict), quick.verdict);
+  if (verdict !== 'clear') return { verdict, worst, duties };
+  const near = hasNearPeak(
+    model,
+    bankModel(model, bank, levels),
+    new PeakFinder(model, bank, PEAK_REACH_H),
+    PEAK_REACH_H,
+  );
+  return { verdict: near ? 'watch' : 'clear', worst, duties };
 }

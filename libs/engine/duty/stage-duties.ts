@@ -1,6 +1,6 @@
 import type { Bank, StageGroup } from '../layout/bank.js';
 import { ratedA } from '../layout/stage.js';
-import type { Flow } from '../network/flow.js';
+import type { Flow } from '../network/bus-flow.js';
 import type { NetworkModel } from '../network/network-model.js';
 import { branchRatio, type StageBranch, stageBranch } from '../network/stage-admittance.js';
 import { type Duty, DutyRow, NEAR_RATIO } from './duty-row.js';

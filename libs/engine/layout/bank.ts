@@ -21,11 +21,47 @@ export interface StageGroupInput {
   capacitanceUf?: number;
   /** nameplate inductance of one reactor phase [mH] */
   reactorMh?: number;
+  /** current up to which the reactor keeps its inductance, as stated [A] */
+  reactorLinearA?: number;
+  /** rating of the switch for capacitor duty at the bus voltage [kvar] */
+  switchKvar?: number;
+  /** rating of the stage's fuse or breaker [A] */
+  fuseA?: number;
+  /** capacitance of one delta phase as measured on the installed stage, the least of the group [µF] */
+  measuredUf?: number;
+}
+
+/** The device that feeds the bank, as fitted. */
+export interface MainDevice {
+  ratedA?: number;
+  /** overload setting [A] */
+  settingA?: number;
+  /** instantaneous setting [A] */
+  instantaneousA?: number;
+  breakingKa?: number;
+  /** peak withstand of the bank's busbars [kA] */
+  withstandKa?: number;
+}
+
+/** What disconnects the bank when something is wrong; true where fitted, false where not. */
+export interface BankProtection {
+  earthFault?: boolean;
+  overTemperature?: boolean;
+  overPressure?: boolean;
+  undervoltage?: boolean;
 }
 
 /** A bank as the site file gives it. */
 export interface BankInput {
   stages: StageGroupInput[];
+  /** how the capacitors are connected */
+  connection?: 'delta' | 'star' | 'earthedStar';
+  /** true where the bank stands on the site already, so that its capacitors have aged */
+  installed?: boolean;
+  /** current-carrying capacity of the bank's conductors [A] */
+  conductorA?: number;
+  mainDevice?: MainDevice;
+  protection?: BankProtection;
   /** inductance between stages, per phase [µH] */
   interStageUh?: number;
   ambientCategory?: 'A' | 'B' | 'C' | 'D';

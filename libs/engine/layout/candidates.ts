@@ -1,3 +1,4 @@
+import { InputProblem } from '../problem.js';
 import type { Bank, StageGroup } from './bank.js';
 import type { CatalogueInput } from './catalogue.js';
 
@@ -26,6 +27,7 @@ export interface SettledCatalogue {
  * @param input the site file's catalogue
  * @param interStageUh customary inductance between stages [µH]
  * @returns the catalogue and the keys that were taken from the shipped lists
+ * @throws InputProblem where the inductance between stages is not above 0
  */
 export function settleCatalogue(
   input: CatalogueInput | undefined,
@@ -33,6 +35,18 @@ export function settleCatalogue(
 ): { catalogue: SettledCatalogue; absent: (keyof typeof COMMON_CATALOGUE)[] } {
   const keys = Object.keys(COMMON_CATALOGUE) as (keyof typeof COMMON_CATALOGUE)[];
   const ascending = (list: readonly number[]): number[] => [...new Set(list)].sort((a, b) => a - b);
+  const betweenUh = input?.interStageUh ?? interStageUh;
+  if (!(betweenUh > 0)) {
+    throw new InputProblem([
+      {
+        code: 'out-of-range',
+        path: 'catalogue.interStageUh',
+        expected: 'more than 0: with none the closed form of the inrush has no end',
+        found: `${betweenUh}`,
+        unit: 'µH',
+      },
+    ]);
+  }
   return {
     catalogue: {
       stageKvar: ascending(input?.stageKvar ?? COMMON_CATALOGUE.stageKvar),
@@ -40,7 +54,7 @@ export function settleCatalogue(
       reactorPct: ascending(input?.reactorPct ?? COMMON_CATALOGUE.reactorPct),
       maxStages: input?.maxStages ?? COMMON_CATALOGUE.maxStages,
       maxTotalKvar: input?.maxTotalKvar ?? null,
-      interStageUh: input?.interStageUh ?? interStageUh,
+      interStageUh: betweenUh,
       interStageGiven: input?.interStageUh !== undefined,
     },
     absent: keys.filter((key) => input?.[key] === undefined),

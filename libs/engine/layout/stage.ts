@@ -55,6 +55,16 @@ export function tunedOrderH(reactorPct: number): number | null {
 }
 
 /**
+ * Reactor ratio of a tuned order: p = 100/n².
+ * @param orderH tuned order n > 1
+ * @returns p [%]
+ * @source method-bank
+ */
+export function reactorPctOfTuned(orderH: number): number {
+  return 100 / (orderH * orderH);
+}
+
+/**
  * Rated current of a stage: I_N = Q_N/(√3·U_N).
  * @param group nameplate of the stage
  * @returns I_N [A]

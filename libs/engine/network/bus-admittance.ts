@@ -1,6 +1,9 @@
 import { pathImpedanceInto } from '../supply/supply-path.js';
 import type { NetworkCase } from './corners.js';
 
+/** A circuit without any loss has no admittance at its resonance; with this much in its place results stay numbers [S]. */
+export const LEAST_SIEMENS = 1e-12;
+
 /** A complex column over orders, real and imaginary parts apart; length n. */
 export interface ComplexColumn {
   re: Float64Array;

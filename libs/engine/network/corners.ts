@@ -1,6 +1,7 @@
 import type { Supply } from '../supply/supply.js';
 import { type SupplyPath, supplyPath } from '../supply/supply-path.js';
 import type { Loads } from './loads.js';
+import type { NetworkState } from './topology.js';
 
 /** One combination of the uncertain quantities. */
 export interface Corner {
@@ -8,12 +9,16 @@ export interface Corner {
   capacitanceFactor: number;
   inductanceFactor: number;
   dampingKw: number;
+  /** how couplers, generators, capacitors and transformers stand; absent in the normal standing */
+  standing?: string;
 }
 
 /** The network without the bank: one supply path and one damping load. */
 export interface NetworkCase {
   path: SupplyPath;
   dampingKw: number;
+  /** standing of a network with several buses; null where there is one bus */
+  state: NetworkState | null;
 }
 
 /** A corner with the places of its network and of its tolerance factors. */
@@ -43,19 +48,26 @@ const INDUCTANCE_FACTORS = [0.97, 1.03];
 
 /**
  * Corners in their fixed order: nominal (greatest fault level, factors 1, most damping, u_k as given), then fault level
- * {max, min} × capacitance {0.95, 1.10} × inductance {0.97, 1.03} × damping {0, min, max, distinct}, the last running
- * fastest. The greatest fault level goes with u_k·(1−t), the least with u_k·(1+t).
+ * {max, min} × capacitance {0.95, 1.10} × inductance {0.97, 1.03} × damping {0, min, max, distinct} × standing, the last
+ * running fastest. The greatest fault level goes with u_k·(1−t), the least with u_k·(1+t).
  * @param supply settled supply
  * @param loads settled loads
  * @param nominalV bus voltage [V]
+ * @param states standings of the network, the normal one first; [null] for one bus
  * @returns corners with their networks and factors
  * @source method-network
  */
-export function cornerSet(supply: Supply, loads: Loads, nominalV: number): CornerSet {
+export function cornerSet(
+  supply: Supply,
+  loads: Loads,
+  nominalV: number,
+  states: readonly (NetworkState | null)[] = [null],
+): CornerSet {
   const { max, min } = supply.faultLevelMva;
   const dampingsKw = [...new Set([0, loads.dampingKw.min, loads.dampingKw.max])];
+  const normal = states[0] ?? null;
   const networks: NetworkCase[] = [
-    { path: supplyPath(supply, nominalV, max, 'asGiven'), dampingKw: loads.dampingKw.max },
+    { path: supplyPath(supply, nominalV, max, 'asGiven'), dampingKw: loads.dampingKw.max, state: normal },
   ];
   const factors: ToleranceFactors[] = [{ capacitanceFactor: 1, inductanceFactor: 1 }];
   for (const capacitanceFactor of CAPACITANCE_FACTORS) {
@@ -70,12 +82,17 @@ export function cornerSet(supply: Supply, loads: Loads, nominalV: number): Corne
   ];
   for (const { faultLevelMva, path } of ends) {
     const first = networks.length;
-    networks.push(...dampingsKw.map((dampingKw) => ({ path, dampingKw })));
+    networks.push(...dampingsKw.flatMap((dampingKw) => states.map((state) => ({ path, dampingKw, state }))));
     for (let f = 1; f < factors.length; f++) {
-      for (const [k, dampingKw] of dampingsKw.entries()) {
-        corners.push({ corner: { faultLevelMva, ...factors[f]!, dampingKw }, network: first + k, factors: f });
+      for (const [k, { dampingKw, state }] of networks.slice(first).entries()) {
+        const corner = { faultLevelMva, ...factors[f]!, dampingKw, ...standing(state) };
+        corners.push({ corner, network: first + k, factors: f });
       }
     }
   }
   return { corners, networks, factors };
+}
+
+function standing(state: NetworkState | null): Pick<Corner, 'standing'> {
+  return state === null || state.name === '' ? {} : { standing: state.name };
 }

@@ -1,33 +1,11 @@
 import type { Bank } from '../layout/bank.js';
 import type { Level } from '../layout/levels.js';
-import type { ComplexColumn } from './bus-admittance.js';
-import type { CornerCase } from './corners.js';
+import { type ComplexColumn, LEAST_SIEMENS } from './bus-admittance.js';
+import type { Flow } from './bus-flow.js';
 import type { NetworkModel } from './network-model.js';
+import { nodalFlowInto } from './nodal-flow.js';
 import { stageAdmittance, stageBranch } from './stage-admittance.js';
 import { combine } from './summation.js';
-
-/** Harmonic voltages and currents at one level in one corner, at the orders present; arrays are reused between visits. */
-export interface Flow {
-  /** index into the levels; 0 is the bank out */
-  level: number;
-  levelKvar: number;
-  /** connected stages per group */
-  vector: Int32Array;
-  corner: CornerCase;
-  ordersH: Float64Array;
-  /** V_h, phase value [V] */
-  voltageV: Float64Array;
-  /** current in the source path, per phase [A] */
-  sourceA: Float64Array;
-  /** current of the whole bank, per phase [A] */
-  bankA: Float64Array;
-  /** current of one stage of each group, per phase [A] */
-  stageA: Float64Array[];
-  /** THD of voltage, % of nominal */
-  voltageDistortionPct: number;
-  /** total demand distortion of the source current, % of I_L; 0 where I_L is 0 */
-  currentDistortionPct: number;
-}
 
 /** A bank's admittances at the orders present. */
 export interface BankModel {
@@ -68,13 +46,18 @@ export function bankModel(model: NetworkModel, bank: Bank, levels: Level[]): Ban
  */
 export function eachFlow(model: NetworkModel, bank: BankModel, visit: (flow: Flow) => void): void {
   const n = model.excitation.ordersH.length;
+  const voltageV = new Float64Array(n);
   const flow: Flow = {
     level: 0,
     levelKvar: 0,
     vector: new Int32Array(bank.bank.groups.length),
     corner: model.corners.corners[0]!,
     ordersH: model.excitation.ordersH,
-    voltageV: new Float64Array(n),
+    voltageV,
+    buses: model.buses.map((_, bus) => ({
+      voltageV: bus === model.bankBus && model.nodal === null ? voltageV : new Float64Array(n),
+      voltageDistortionPct: 0,
+    })),
     sourceA: new Float64Array(n),
     bankA: new Float64Array(n),
     stageA: bank.bank.groups.map(() => new Float64Array(n)),
@@ -88,7 +71,8 @@ export function eachFlow(model: NetworkModel, bank: BankModel, visit: (flow: Flo
         flow.levelKvar = level.levelKvar;
         flow.vector = vector;
         flow.corner = corner;
-        flowInto(model, bank.stages[corner.factors]!, flow);
+        if (model.nodal === null) flowInto(model, bank.stages[corner.factors]!, flow);
+        else nodalFlowInto(model, bank.stages[corner.factors]!, flow);
         visit(flow);
       }
     }
@@ -110,7 +94,7 @@ function flowInto(model: NetworkModel, stages: readonly ComplexColumn[], flow: F
     }
     const yRe = table.bus.re[i]! + bankRe;
     const yIm = table.bus.im[i]! + bankIm;
-    const zMagnitude = 1 / magnitude(yRe, yIm);
+    const zMagnitude = 1 / Math.max(LEAST_SIEMENS, magnitude(yRe, yIm));
     const sRe = table.source.re[i]!;
     const sIm = table.source.im[i]!;
     // E·(1 − Z/Z_s)/Z_s = (Z/Z_s)·(E/Z_s)·(Z_s·Y − 1): the share Z/Z_s stands before both currents of the source.
@@ -129,6 +113,7 @@ function flowInto(model: NetworkModel, stages: readonly ComplexColumn[], flow: F
     currentSquare += source * source;
   }
   flow.voltageDistortionPct = (100 * Math.sqrt(voltageSquare)) / (nominalV / Math.sqrt(3));
+  flow.buses[0]!.voltageDistortionPct = flow.voltageDistortionPct;
   flow.currentDistortionPct = loadA > 0 ? (100 * Math.sqrt(currentSquare)) / loadA : 0;
 }
 

@@ -17,15 +17,44 @@ export interface OrderPct {
   orderH: number;
   /** [%] of the fundamental current (loads) or of nominal voltage (background) */
   pct: number;
+  /** angle to a reference common to the loads of a bus, where known [°]; those with angles add as phasors */
+  angleDeg?: number;
 }
 
 /** A load that injects harmonic current; `orders` wins where both stand. */
 export interface DistortingLoad {
   name: string;
+  /** bus it stands at, in a network of several; the first where absent */
+  bus?: string;
   /** fundamental current per phase at the bus [A] */
   fundamentalA: number;
   spectrum?: SpectrumName;
   orders?: OrderPct[];
+}
+
+/** A load whose reactive power swings faster than a contactor's stages can follow. */
+export interface FastLoad {
+  name: string;
+  /** swing of its reactive power [kvar] */
+  swingKvar?: number;
+  /** time of a swing [s] */
+  swingS?: number;
+}
+
+/** What an instrument read on the working site; it checks the model and is never summed with the sources. */
+export interface MeasuredDistortion {
+  /** bus it was read at; the bank's where absent */
+  place?: string;
+  /** active power while it was read [kW] */
+  loadKw?: number;
+  /** kvar of the bank connected while it was read; 0 with the bank out [kvar] */
+  bankKvar: number;
+  /** local date "2026-01-31" */
+  date?: string;
+  /** harmonic voltages [% of nominal] */
+  voltagePct?: OrderPct[];
+  /** harmonic currents of the supply, per phase */
+  currentA?: { orderH: number; a: number }[];
 }
 
 /** The loads as the site file gives them; an absent list means unknown, an empty one declares there is none. */
@@ -35,6 +64,8 @@ export interface LoadsInput {
   backgroundPct?: OrderPct[];
   dampingKw?: { max?: number; min?: number };
   summation?: 'exponent' | 'arithmetic';
+  fast?: FastLoad[];
+  measured?: MeasuredDistortion;
 }
 
 /** The loads with defaults filled in; null lists are unknown. */

@@ -1,7 +1,11 @@
 import { type SupplyPath, shortCircuitMva } from '../supply/supply-path.js';
+import type { Flow } from './bus-flow.js';
 import type { Corner } from './corners.js';
-import type { BankModel, Flow } from './flow.js';
+import type { BankModel } from './flow.js';
 import type { NetworkModel } from './network-model.js';
+import { networkStates } from './network-states.js';
+import { nodalCase } from './nodal-case.js';
+import { nodalTable } from './nodal-impedance.js';
 import type { PeakFinder } from './peaks.js';
 
 /** Voltage and currents at one order. */
@@ -17,7 +21,8 @@ export interface OrderResult {
 
 /** A level in the nominal or in its worst corner. */
 export interface NetworkLevel {
-  bus: 'main';
+  /** name of the bus */
+  bus: string;
   levelKvar: number;
   case: 'nominal' | 'worst';
   corner: Corner;
@@ -47,60 +52,67 @@ interface Kept {
   corner: Flow['corner'];
 }
 
-/** Collects the nominal and the worst case of every level from the flows that pass. */
+/** Collects the nominal and the worst case of every level at every bus from the flows that pass. */
 export class LevelCollector {
   readonly #model: NetworkModel;
-  readonly #nominal: (Kept | undefined)[] = [];
-  readonly #worst: (Kept | undefined)[] = [];
+  readonly #nominal: (Kept | undefined)[][];
+  readonly #worst: (Kept | undefined)[][];
 
   /** @param model the network without the bank */
   constructor(model: NetworkModel) {
     this.#model = model;
+    this.#nominal = model.buses.map(() => []);
+    this.#worst = model.buses.map(() => []);
   }
 
   /** @param flow the next flow; levels, corners and vectors in their fixed order */
   take(flow: Flow): void {
     const isNominal = flow.corner === this.#model.corners.corners[0];
-    if (isNominal && this.#nominal[flow.level] === undefined) {
-      this.#nominal[flow.level] = this.#kept(flow, 'nominal');
+    for (let bus = 0; bus < flow.buses.length; bus++) {
+      const nominal = this.#nominal[bus]!;
+      const worst = this.#worst[bus]!;
+      if (isNominal && nominal[flow.level] === undefined) nominal[flow.level] = this.#kept(flow, bus, 'nominal');
+      const known = worst[flow.level];
+      const least = known === undefined ? -1 : known.level.voltageDistortionPct * (1 + WORSE_SHARE);
+      if (flow.buses[bus]!.voltageDistortionPct > least) worst[flow.level] = this.#kept(flow, bus, 'worst');
     }
-    const worst = this.#worst[flow.level];
-    const least = worst === undefined ? -1 : worst.level.voltageDistortionPct * (1 + WORSE_SHARE);
-    if (flow.voltageDistortionPct > least) this.#worst[flow.level] = this.#kept(flow, 'worst');
   }
 
   /**
    * @param finder peaks of the same bank on the same network
-   * @returns every level twice, nominal then worst, ascending
+   * @returns every level twice, nominal then worst, ascending; bus after bus
    */
   levels(finder: PeakFinder): NetworkLevel[] {
     const all: NetworkLevel[] = [];
-    for (const [k, nominal] of this.#nominal.entries()) {
-      for (const kept of [nominal!, this.#worst[k]!]) {
-        const peak = finder.greatest(kept.vector, kept.corner);
-        all.push({ ...kept.level, parallelOrderH: peak?.orderH ?? null, peakOhm: peak?.impedanceOhm ?? null });
+    for (let bus = 0; bus < this.#nominal.length; bus++) {
+      for (const [k, nominal] of this.#nominal[bus]!.entries()) {
+        for (const kept of [nominal!, this.#worst[bus]![k]!]) {
+          const peak = finder.greatest(kept.vector, kept.corner, bus);
+          all.push({ ...kept.level, parallelOrderH: peak?.orderH ?? null, peakOhm: peak?.impedanceOhm ?? null });
+        }
       }
     }
     return all;
   }
 
-  #kept(flow: Flow, name: NetworkLevel['case']): Kept {
+  #kept(flow: Flow, bus: number, name: NetworkLevel['case']): Kept {
     const phaseV = this.#model.nominalV / Math.sqrt(3);
+    const { voltageV, voltageDistortionPct } = flow.buses[bus]!;
     return {
       vector: flow.vector,
       corner: flow.corner,
       level: {
-        bus: 'main',
+        bus: this.#model.buses[bus]!,
         levelKvar: flow.levelKvar,
         case: name,
         corner: { ...flow.corner.corner },
         parallelOrderH: null,
         peakOhm: null,
-        voltageDistortionPct: flow.voltageDistortionPct,
+        voltageDistortionPct,
         currentDistortionPct: flow.currentDistortionPct,
         orders: Array.from(flow.ordersH, (orderH, i) => ({
           orderH,
-          voltagePct: (100 * flow.voltageV[i]!) / phaseV,
+          voltagePct: (100 * voltageV[i]!) / phaseV,
           sourceA: flow.sourceA[i]!,
           bankA: flow.bankA[i]!,
         })),
@@ -111,6 +123,7 @@ export class LevelCollector {
 
 /** A peak within reach of an order that is present. */
 export interface NearPeak {
+  bus: string;
   levelKvar: number;
   corner: Corner;
   peakOrderH: number;
@@ -130,7 +143,7 @@ export function nearestPeak(model: NetworkModel, bank: BankModel, finder: PeakFi
   if (model.excitation.ordersH.length === 0) return null;
   let nearest: NearPeak | null = null;
   let leastH = Number.POSITIVE_INFINITY;
-  for (const peak of everyPeak(model, bank, finder)) {
+  for (const peak of everyPeak(model, bank, finder, reachH)) {
     const awayH = Math.abs(peak.peakOrderH - peak.presentOrderH);
     if (awayH > reachH || awayH >= leastH) continue;
     leastH = awayH;
@@ -139,13 +152,37 @@ export function nearestPeak(model: NetworkModel, bank: BankModel, finder: PeakFi
   return nearest;
 }
 
-// Levels above 0, corners, count vectors, in that order of nesting; each peak with the order present it is nearest to.
-function* everyPeak(model: NetworkModel, bank: BankModel, finder: PeakFinder): Generator<NearPeak> {
-  for (const level of bank.levels.slice(1)) {
+/**
+ * Does any peak come near an order present; stops at the first.
+ * @param model the network without the bank
+ * @param bank the bank
+ * @param finder peaks of the same bank
+ * @param reachH how near counts [order]
+ * @returns true where one does
+ * @source method-limits
+ */
+export function hasNearPeak(model: NetworkModel, bank: BankModel, finder: PeakFinder, reachH: number): boolean {
+  if (model.excitation.ordersH.length === 0) return false;
+  for (const { peakOrderH, presentOrderH } of everyPeak(model, bank, finder, reachH)) {
+    if (Math.abs(peakOrderH - presentOrderH) <= reachH) return true;
+  }
+  return false;
+}
+
+// Levels above 0, corners, count vectors, buses, in that order of nesting; each peak with the order present it is
+// nearest to.
+function* everyPeak(model: NetworkModel, bank: BankModel, finder: PeakFinder, reachH: number): Generator<NearPeak> {
+  const within = (lowH: number, highH: number): boolean =>
+    model.excitation.ordersH.some((h) => h >= lowH - reachH && h <= highH + reachH);
+  for (const { levelKvar, vectors } of bank.levels.slice(1)) {
     for (const corner of model.corners.corners) {
-      for (const { orderH } of level.vectors.flatMap((vector) => finder.peaks(vector, corner))) {
-        const presentOrderH = nearestOrder(model.excitation.ordersH, orderH);
-        yield { levelKvar: level.levelKvar, corner: corner.corner, peakOrderH: orderH, presentOrderH };
+      for (const vector of vectors) {
+        for (const [k, bus] of model.buses.entries()) {
+          for (const { orderH } of finder.peaks(vector, corner, k, within)) {
+            const presentOrderH = nearestOrder(model.excitation.ordersH, orderH);
+            yield { bus, levelKvar, corner: corner.corner, peakOrderH: orderH, presentOrderH };
+          }
+        }
       }
     }
   }
@@ -156,7 +193,8 @@ function nearestOrder(ordersH: Float64Array, orderH: number): number {
 }
 
 /**
- * Short-circuit power at both ends of the supply's range.
+ * Short-circuit power at the bank's bus at both ends of the supply's range; in a network of several buses the greatest
+ * and the least over its standings, capacitors and damping loads not counted, running generators counted.
  * @param model the network without the bank
  * @param levels levels already collected
  * @returns the network in figures
@@ -166,9 +204,45 @@ export function summarizeNetwork(model: NetworkModel, levels: NetworkLevel[]): N
   const { networks } = model.corners;
   const strongest: SupplyPath = networks[1]!.path;
   const weakest: SupplyPath = networks[networks.length - 1]!.path;
+  const ends = model.nodal === null ? null : nodalShortCircuit(model, { strongest, weakest });
   return {
-    shortCircuitMva: shortCircuitMva(strongest, model.nominalV),
-    shortCircuitMinMva: shortCircuitMva(weakest, model.nominalV),
+    shortCircuitMva: ends?.mostMva ?? shortCircuitMva(strongest, model.nominalV),
+    shortCircuitMinMva: ends?.leastMva ?? shortCircuitMva(weakest, model.nominalV),
     levels,
   };
+}
+
+function nodalShortCircuit(
+  model: NetworkModel,
+  paths: { strongest: SupplyPath; weakest: SupplyPath },
+): { mostMva: number; leastMva: number } {
+  const atBus = (path: SupplyPath): number[] =>
+    bareImpedances(model, path).map(([re, im]) => model.nominalV ** 2 / Math.sqrt(re * re + im * im) / 1e6);
+  return { mostMva: Math.max(...atBus(paths.strongest)), leastMva: Math.min(...atBus(paths.weakest)) };
+}
+
+/**
+ * Impedance of the supply at its strongest, seen from the bank's bus at the fundamental.
+ * @param model the network without the bank, with several buses
+ * @param out receives [Re, Im] of the standing with the least |Z| [Ω]
+ * @source method-network
+ */
+export function strongestInto(model: NetworkModel, out: Float64Array): void {
+  const found = bareImpedances(model, model.corners.networks[1]!.path);
+  const size = ([re, im]: [number, number]): number => re * re + im * im;
+  out.set(found.reduce((least, z) => (size(z) < size(least) ? z : least)));
+}
+
+// Source, transformers, cables and running generators alone, in every standing.
+function bareImpedances(model: NetworkModel, path: SupplyPath): [number, number][] {
+  const { topology } = model.nodal!;
+  const none = topology.motorKw.map(() => 0);
+  const bare = { ...topology, motorKw: none, resistiveKw: none };
+  return networkStates(topology).map((state) => {
+    const withoutCapacitors = { ...state, capacitorsIn: state.capacitorsIn.map(() => 0) };
+    const nodal = nodalCase(bare, withoutCapacitors, path, { ...model.damping, dampingKw: 0, listedShare: 0 });
+    const { z, nodes } = nodalTable(nodal, Float64Array.of(1));
+    const at = 2 * nodal.busNode[model.bankBus]! * (nodes + 1);
+    return [z[at]!, z[at + 1]!];
+  });
 }

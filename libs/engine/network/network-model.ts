@@ -2,7 +2,11 @@ import type { Supply } from '../supply/supply.js';
 import { type DampingModel, type NetworkTable, networkTable } from './bus-admittance.js';
 import { type CornerSet, cornerSet } from './corners.js';
 import type { Loads } from './loads.js';
+import { networkStates } from './network-states.js';
+import { type NodalCase, nodalCase } from './nodal-case.js';
+import { type NodalTable, nodalTable } from './nodal-impedance.js';
 import { combine, type Excitation, excitation } from './summation.js';
+import type { Topology } from './topology.js';
 
 /** What drives a network at each order present, bank left out; length n. */
 export interface Drive {
@@ -12,6 +16,17 @@ export interface Drive {
   backgroundA: Float64Array;
   /** loads and background combined as a current at the bus [A] */
   equivalentA: Float64Array;
+}
+
+/** The part of a model that only a network of several buses has. */
+export interface NodalModel {
+  topology: Topology;
+  /** per network */
+  cases: NodalCase[];
+  /** per network, at the orders present */
+  tables: NodalTable[];
+  /** per bus: combined current of the loads at it, at the orders present [A] */
+  injectedA: Float64Array[];
 }
 
 /** Everything about the network that does not depend on the bank, tabled once. */
@@ -26,10 +41,16 @@ export interface NetworkModel {
   drives: Drive[];
   /** I_L, the load current distortion is held against [A]; 0 where nothing flows */
   loadA: number;
+  /** null where there is one bus */
+  nodal: NodalModel | null;
+  /** names of the buses */
+  buses: string[];
+  /** index of the bank's bus */
+  bankBus: number;
 }
 
 /**
- * The network of a site without its bank.
+ * The network of a site with one bus, without its bank.
  * @param supply settled supply
  * @param loads settled loads
  * @param nominalV bus voltage [V]
@@ -38,12 +59,104 @@ export interface NetworkModel {
  * @source method-network
  */
 export function networkModel(supply: Supply, loads: Loads, nominalV: number, loadA: number): NetworkModel {
+  return siteNetwork(supply, loads, { nominalV, loadA, topology: null });
+}
+
+/**
+ * The network of a site without its bank.
+ * @param supply settled supply
+ * @param loads settled loads
+ * @param site bus voltage [V], I_L [A], and the topology, null where there is one bus
+ * @returns corners, excitation and tables at the orders present
+ * @source method-network
+ */
+export function siteNetwork(
+  supply: Supply,
+  loads: Loads,
+  site: { nominalV: number; loadA: number; topology: Topology | null },
+): NetworkModel {
+  const { nominalV, loadA, topology } = site;
   const damping = { nominalV, motorSharePct: loads.motorSharePct };
-  const corners = cornerSet(supply, loads, nominalV);
+  const states = topology === null ? [null] : networkStates(topology);
+  const corners = cornerSet(supply, topology === null ? loads : withListed(loads, topology), nominalV, states);
   const present = excitation(loads, nominalV);
-  const atOrders = corners.networks.map((network) => networkTable(network, damping, present.ordersH));
-  const drives = atOrders.map((table) => drive(table, present));
-  return { nominalV, damping, corners, excitation: present, atOrders, drives, loadA };
+  const nodal = topology === null ? null : nodalModel({ topology, corners, loads, damping, present });
+  const model: NetworkModel = {
+    nominalV,
+    damping,
+    corners,
+    excitation: present,
+    atOrders: [],
+    drives: [],
+    loadA,
+    nodal,
+    buses: topology === null ? ['main'] : topology.buses,
+    bankBus: topology?.bankBus ?? 0,
+  };
+  model.atOrders = corners.networks.map((_, network) => tableAt(model, network, present.ordersH));
+  model.drives = model.atOrders.map((table) => drive(table, present));
+  return model;
+}
+
+/**
+ * Z_s and Y₀ at the bank's bus over orders, whatever the network's shape: the only place that fills the table.
+ * @param model the network without the bank
+ * @param network index into the corners' networks
+ * @param ordersH orders h ≥ 1
+ * @returns tables of the same length
+ * @source method-network
+ */
+export function tableAt(model: NetworkModel, network: number, ordersH: Float64Array): NetworkTable {
+  if (model.nodal === null) return networkTable(model.corners.networks[network]!, model.damping, ordersH);
+  const nodalCase = model.nodal.cases[network]!;
+  return bankBusTable(nodalTable(nodalCase, ordersH), nodalCase.busNode[model.bankBus]!);
+}
+
+function bankBusTable(table: NodalTable, node: number): NetworkTable {
+  const n = table.nodes;
+  const re = new Float64Array(table.ordersH.length);
+  const im = new Float64Array(table.ordersH.length);
+  for (let i = 0; i < re.length; i++) {
+    const at = 2 * (i * n * n + node * n + node);
+    const square = table.z[at]! ** 2 + table.z[at + 1]! ** 2;
+    re[i] = table.z[at]! / square;
+    im[i] = -table.z[at + 1]! / square;
+  }
+  return { ordersH: table.ordersH, source: { re: table.sourceRe, im: table.sourceIm }, bus: { re, im } };
+}
+
+function nodalModel(parts: {
+  topology: Topology;
+  corners: CornerSet;
+  loads: Loads;
+  damping: DampingModel;
+  present: Excitation;
+}): NodalModel {
+  const { topology, corners, loads, damping, present } = parts;
+  const mostKw = withListed(loads, topology).dampingKw.max;
+  const cases = corners.networks.map(({ path, dampingKw, state }) => {
+    const listedShare = mostKw > 0 ? dampingKw / mostKw : 0;
+    const atBankKw = listedShare * loads.dampingKw.max;
+    return nodalCase(topology, state!, path, { ...damping, dampingKw: atBankKw, listedShare });
+  });
+  return {
+    topology,
+    cases,
+    tables: cases.map((nodal) => nodalTable(nodal, present.ordersH)),
+    injectedA: topology.buses.map((name, bus) => busInjection(loads, present, { name, first: bus === 0 })),
+  };
+}
+
+// A corner's damping is the whole site's, so the undamped one has neither the damping load nor what is listed.
+function withListed(loads: Loads, { motorKw, resistiveKw }: Topology): Loads {
+  const listedKw = [...motorKw, ...resistiveKw].reduce((sum, kw) => sum + kw, 0);
+  return { ...loads, dampingKw: { min: loads.dampingKw.min, max: loads.dampingKw.max + listedKw } };
+}
+
+function busInjection(loads: Loads, present: Excitation, bus: { name: string; first: boolean }): Float64Array {
+  const here = (loads.distorting ?? []).filter((load) => (load.bus === undefined ? bus.first : load.bus === bus.name));
+  const own = excitation({ ...loads, distorting: here, backgroundPct: [] }, 1);
+  return present.ordersH.map((h) => own.injectedA[own.ordersH.indexOf(h)] ?? 0);
 }
 
 function drive({ source }: NetworkTable, { injectedA, backgroundV, exponent }: Excitation): Drive {

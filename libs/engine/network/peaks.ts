@@ -1,11 +1,11 @@
 import type { Bank } from '../layout/bank.js';
 import { goldenMinimum } from '../quantity/minimum.js';
-import { type ComplexColumn, type NetworkTable, networkTable } from './bus-admittance.js';
+import type { ComplexColumn } from './bus-admittance.js';
+import { type BusColumns, bankColumn, busColumns, networkColumns, seenSquareInto } from './bus-columns.js';
 import type { CornerCase } from './corners.js';
 import type { NetworkModel } from './network-model.js';
-import { admittanceSquareInto } from './scan-into.js';
 import { HIGHEST_ORDER_H } from './spectra.js';
-import { branchRatio, stageAdmittance, stageBranch } from './stage-admittance.js';
+import { branchRatio, type StageBranch, stageAdmittance, stageBranch } from './stage-admittance.js';
 
 /** An interior local maximum of |Z(h)| at the bus. */
 export interface Peak {
@@ -14,115 +14,181 @@ export interface Peak {
 }
 
 const GRID_STEP_H = 0.02;
+const EVEN_STEPS = Math.round((HIGHEST_ORDER_H - 1) / GRID_STEP_H);
+const EVEN_GRID_H = Float64Array.from(
+  { length: EVEN_STEPS + 1 },
+  (_, i) => 1 + (i * (HIGHEST_ORDER_H - 1)) / EVEN_STEPS,
+);
 /** Peaks are refined to well within 1e-4 of an order. */
 const REFINED_WIDTH_H = 1e-6;
 /** Points on either side of a tuned order close in on it by this factor, from this share of the order. */
 const APPROACH = 0.7;
 const APPROACH_FROM = 0.05;
 const APPROACH_POINTS = 30;
+/** Looks at a shoulder, three steps of the grid. */
+const SHOULDER_POINTS = 60;
+/** Neighbouring shoulders overlap. */
+const SAME_PEAK_H = 1e-4;
 /** Points nearer than this are one: groups of one ratio but other ratings differ in the last digit of their tuned order,
  * and two samples a rounding apart would make a false valley of the rounding. */
 const ONE_POINT_H = 1e-9;
 
-interface FactorGrid {
-  ordersH: Float64Array;
-  /** per group */
-  stages: ComplexColumn[];
-  /** per network, filled on first use */
-  networks: (NetworkTable | undefined)[];
-}
-
 /**
- * Finds every interior local maximum of |Z(h)|, 1 < h < 50, of a bank on a network.
+ * Finds every interior local maximum of |Z(h)|, 1 < h < 50, of a bank on a network, at any bus.
  *
- * A peak can hide between two points of an even grid only where |Z| turns twice within a step. On a bus whose supply
- * and loads are inductive and resistive it turns only beside a branch's tuned order (between two tuned orders of the
- * lossless circuit there is exactly one pole), so the even grid is joined by points that close in geometrically on
- * every tuned order from both sides: each rising and each falling piece then holds a sample.
+ * A peak can hide between two points of an even grid only where |Z| turns twice within a step. Where supply and loads
+ * are inductive and resistive it turns only beside a branch's tuned order (between two tuned orders of the lossless
+ * circuit there is exactly one pole), so the even grid is joined by points that close in geometrically on every tuned
+ * order, in every corner, from both sides: each rising and each falling piece then holds a sample. Capacitors of the
+ * network itself add tuned orders of their own, and where the slope all but vanishes the grid is refined.
  */
 export class PeakFinder {
   readonly #model: NetworkModel;
   readonly #bank: Bank;
-  readonly #grids: (FactorGrid | undefined)[] = [];
+  readonly #ordersH: Float64Array;
+  /** reused from call to call */
+  readonly #square: Float64Array;
+  readonly #stages: (ComplexColumn[] | undefined)[] = [];
+  readonly #buses: (BusColumns[] | undefined)[] = [];
 
   /**
    * @param model the network without the bank
    * @param bank the bank
+   * @param near looks only within this of an order present [order]; everywhere where absent
    */
-  constructor(model: NetworkModel, bank: Bank) {
+  constructor(model: NetworkModel, bank: Bank, near?: number) {
     this.#model = model;
     this.#bank = bank;
+    const all = peakGrid([...this.#tunedOrders(), ...networkTunedOrders(model)]);
+    // A step more on either side, so that a peak at the edge still has a sample beyond it.
+    const reach = near === undefined ? Number.POSITIVE_INFINITY : near + 2 * GRID_STEP_H;
+    const present = model.excitation.ordersH;
+    this.#ordersH = near === undefined ? all : all.filter((h) => present.some((order) => Math.abs(h - order) <= reach));
+    this.#square = new Float64Array(this.#ordersH.length);
   }
 
   /**
    * Every peak at one count vector in one corner.
    * @param vector connected stages per group
    * @param corner corner of the network
+   * @param bus index of the bus; the bank's where absent
+   * @param worthRefining leaves out brackets of orders that don't matter to the caller
    * @returns peaks by ascending order [Ω]
    * @source method-network
    */
-  peaks(vector: Int32Array, corner: CornerCase): Peak[] {
-    const grid = this.#grid(corner.factors);
-    const network = this.#table(grid, corner.network);
-    const square = new Float64Array(grid.ordersH.length);
-    admittanceSquareInto(network.bus, grid.stages, vector, square);
+  peaks(
+    vector: Int32Array,
+    corner: CornerCase,
+    bus = this.#model.bankBus,
+    worthRefining: (lowH: number, highH: number) => boolean = () => true,
+  ): Peak[] {
+    const columns = this.#columns(corner.network, bus);
+    const square = this.#square;
+    seenSquareInto(columns, bankColumn(this.#stagesAt(corner.factors), vector, square.length), square);
     const peaks: Peak[] = [];
     for (let i = 1; i < square.length - 1; i++) {
       if (!(square[i]! < square[i - 1]! && square[i]! <= square[i + 1]!)) continue;
-      const exact = (h: number): number => this.#admittanceSquare(h, vector, corner);
-      const orderH = goldenMinimum(exact, grid.ordersH[i - 1]!, grid.ordersH[i + 1]!, REFINED_WIDTH_H);
+      const lowH = this.#ordersH[i - 1]!;
+      const highH = this.#ordersH[i + 1]!;
+      if (!worthRefining(lowH, highH)) continue;
+      const exact = (h: number): number => this.#squareAt(h, vector, { corner, bus });
+      const orderH = goldenMinimum(exact, lowH, highH, REFINED_WIDTH_H);
       if (orderH > 1 + GRID_STEP_H / 100 && orderH < HIGHEST_ORDER_H - GRID_STEP_H / 100) {
         peaks.push({ orderH, impedanceOhm: 1 / Math.sqrt(exact(orderH)) });
       }
     }
-    return peaks;
+    return this.#model.nodal === null
+      ? peaks
+      : this.#withShoulders(peaks, square, (h) => this.#squareAt(h, vector, { corner, bus }));
   }
 
   /**
    * The peak with the largest |Z|.
    * @param vector connected stages per group
    * @param corner corner of the network
+   * @param bus index of the bus; the bank's where absent
    * @returns the parallel resonance, or null where |Z| has no interior maximum
    * @source method-network
    */
-  greatest(vector: Int32Array, corner: CornerCase): Peak | null {
+  greatest(vector: Int32Array, corner: CornerCase, bus = this.#model.bankBus): Peak | null {
     let greatest: Peak | null = null;
-    for (const peak of this.peaks(vector, corner)) {
+    for (const peak of this.peaks(vector, corner, bus)) {
       if (greatest === null || peak.impedanceOhm > greatest.impedanceOhm) greatest = peak;
     }
     return greatest;
   }
 
-  #grid(factors: number): FactorGrid {
-    const known = this.#grids[factors];
-    if (known !== undefined) return known;
+  // Cables and capacitors of the network can make |Z| turn twice within a step on a steep side: there its slope all but
+  // vanishes against what it changes by from step to step, and the place is looked at more closely.
+  #withShoulders(peaks: Peak[], square: Float64Array, exact: (h: number) => number): Peak[] {
+    const found = [...peaks];
+    for (let i = 1; i < square.length - 2; i++) {
+      if (!isShoulder(this.#ordersH, square, i)) continue;
+      for (const orderH of hiddenMinima(exact, this.#ordersH[i - 1]!, this.#ordersH[i + 2]!)) {
+        if (found.some((peak) => Math.abs(peak.orderH - orderH) < SAME_PEAK_H)) continue;
+        found.push({ orderH, impedanceOhm: 1 / Math.sqrt(exact(orderH)) });
+      }
+    }
+    return found.sort((a, b) => a.orderH - b.orderH);
+  }
+
+  #branches(factors: number): StageBranch[] {
     const exponent = this.#model.corners.networks[0]!.path.resistanceExponent;
-    const branches = this.#bank.groups.map((group) =>
-      stageBranch(group, this.#model.corners.factors[factors]!, exponent),
+    const factor = this.#model.corners.factors[factors]!;
+    return this.#bank.groups.map((group) => stageBranch(group, factor, exponent));
+  }
+
+  #tunedOrders(): number[] {
+    return this.#model.corners.factors.flatMap((_, factors) =>
+      this.#branches(factors)
+        .filter((branch) => branch.inductiveOhm > 0)
+        .map((branch) => 1 / Math.sqrt(branchRatio(branch))),
     );
-    const tuned = branches.filter((b) => b.inductiveOhm > 0).map((b) => 1 / Math.sqrt(branchRatio(b)));
-    const ordersH = peakGrid(tuned);
-    const grid = { ordersH, stages: branches.map((branch) => stageAdmittance(branch, ordersH)), networks: [] };
-    this.#grids[factors] = grid;
-    return grid;
   }
 
-  #table(grid: FactorGrid, network: number): NetworkTable {
-    grid.networks[network] ??= networkTable(this.#model.corners.networks[network]!, this.#model.damping, grid.ordersH);
-    return grid.networks[network];
+  #stagesAt(factors: number): ComplexColumn[] {
+    this.#stages[factors] ??= this.#branches(factors).map((branch) => stageAdmittance(branch, this.#ordersH));
+    return this.#stages[factors];
   }
 
-  #admittanceSquare(orderH: number, vector: Int32Array, corner: CornerCase): number {
-    const at = Float64Array.of(orderH);
-    const network = this.#model.corners.networks[corner.network]!;
-    const table = networkTable(network, this.#model.damping, at);
-    const exponent = network.path.resistanceExponent;
-    const factors = this.#model.corners.factors[corner.factors]!;
-    const stages = this.#bank.groups.map((group) => stageAdmittance(stageBranch(group, factors, exponent), at));
+  #columns(network: number, bus: number): BusColumns {
+    this.#buses[network] ??= networkColumns(this.#model, network, this.#ordersH);
+    return this.#buses[network][bus]!;
+  }
+
+  #squareAt(orderH: number, vector: Int32Array, at: { corner: CornerCase; bus: number }): number {
+    const ordersH = Float64Array.of(orderH);
+    const stages = this.#branches(at.corner.factors).map((branch) => stageAdmittance(branch, ordersH));
     const out = new Float64Array(1);
-    admittanceSquareInto(table.bus, stages, vector, out);
+    seenSquareInto(busColumns(this.#model, at.corner.network, at.bus, ordersH), bankColumn(stages, vector, 1), out);
     return out[0]!;
   }
+}
+
+function isShoulder(ordersH: Float64Array, square: Float64Array, i: number): boolean {
+  const slope = (k: number): number => (square[k + 1]! - square[k]!) / (ordersH[k + 1]! - ordersH[k]!);
+  const [before, here, after] = [slope(i - 1), slope(i), slope(i + 1)];
+  if (before * here <= 0 || here * after <= 0) return false;
+  if (Math.abs(here) > Math.abs(before) || Math.abs(here) >= Math.abs(after)) return false;
+  return Math.abs(here) < Math.max(Math.abs(before - here), Math.abs(after - here));
+}
+
+function hiddenMinima(exact: (h: number) => number, lowH: number, highH: number): number[] {
+  const orderH = (k: number): number => lowH + (k * (highH - lowH)) / SHOULDER_POINTS;
+  const values = Array.from({ length: SHOULDER_POINTS + 1 }, (_, k) => exact(orderH(k)));
+  const minima: number[] = [];
+  for (let k = 1; k < SHOULDER_POINTS; k++) {
+    if (!(values[k]! < values[k - 1]! && values[k]! <= values[k + 1]!)) continue;
+    minima.push(goldenMinimum(exact, orderH(k - 1), orderH(k + 1), REFINED_WIDTH_H));
+  }
+  return minima;
+}
+
+// Capacitors that stand in the network: tuned orders of their own branches.
+function networkTunedOrders(model: NetworkModel): number[] {
+  return (model.nodal?.topology.capacitors ?? [])
+    .filter(({ group }) => group.reactorPct > 0)
+    .map(({ group }) => 1 / Math.sqrt(group.reactorPct / 100));
 }
 
 /**
@@ -131,17 +197,13 @@ export class PeakFinder {
  * @returns ascending orders, 1 … 50
  */
 export function peakGrid(tunedH: readonly number[]): Float64Array {
-  const count = Math.round((HIGHEST_ORDER_H - 1) / GRID_STEP_H);
-  const points = new Set<number>();
-  for (let i = 0; i <= count; i++) points.add(1 + (i * (HIGHEST_ORDER_H - 1)) / count);
-  for (const tuned of tunedH) {
-    for (let k = 0; k < APPROACH_POINTS; k++) {
-      const step = tuned * APPROACH_FROM * APPROACH ** k;
-      points.add(tuned - step);
-      points.add(tuned + step);
-    }
-  }
-  const ascending = Float64Array.from(points)
+  const approaching = tunedH.flatMap((tuned) =>
+    Array.from({ length: APPROACH_POINTS }, (_, k) => tuned * APPROACH_FROM * APPROACH ** k).flatMap((step) => [
+      tuned - step,
+      tuned + step,
+    ]),
+  );
+  const ascending = Float64Array.of(...EVEN_GRID_H, ...approaching)
     .filter((h) => h >= 1 && h <= HIGHEST_ORDER_H)
     .sort();
   return ascending.filter((h, i) => i === 0 || h - ascending[i - 1]! > ONE_POINT_H);

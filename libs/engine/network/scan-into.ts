@@ -1,4 +1,5 @@
-import type { ComplexColumn } from './bus-admittance.js';
+import { type ComplexColumn, LEAST_SIEMENS } from './bus-admittance.js';
+import type { BusColumns } from './bus-columns.js';
 
 /**
  * |Z(h)| at the bus for a bank of equal stages, many levels at once: Z = 1/(Y₀ + n·y), and since
@@ -44,7 +45,96 @@ function levelInto({ a, b, c }: Quadratic, count: number, out: Float64Array, off
 }
 
 /**
- * |Y(h)|² at the bus with a count of stages of each group connected: Y = Y₀ + Σ n_g·y_g.
+ * |Z(h)| at every bus for a bank of equal stages, many levels at once. With the bank's bus at Y₀ and w = z_ii − z_ib²·Y₀
+ * the rank-1 change is Z_ii = (Y₀·z_ii + n·y·w)/(Y₀ + n·y): numerator and denominator are quadratics in n over tables, and
+ * the denominator is every bus's own.
+ * @param buses columns of every bus over orders, length m each
+ * @param stage y of one stage over the same orders [S]
+ * @param counts connected stages per level, length L
+ * @param out receives |Z| [Ω], bus after bus, level after level, length buses·L·m
+ * @source method-network
+ */
+export function scanBusesInto(
+  buses: readonly BusColumns[],
+  stage: ComplexColumn,
+  counts: Float64Array,
+  out: Float64Array,
+): void {
+  const m = stage.re.length;
+  const below = emptyQuadratic(m);
+  quadraticInto(buses[0]!.bank, stage, below);
+  const above = buses.map(({ bank, other }) => {
+    if (other === null) return null;
+    const q = emptyQuadratic(m);
+    numeratorInto(bank, other, stage, q);
+    return q;
+  });
+  const inverse = new Float64Array(m);
+  for (let level = 0; level < counts.length; level++) {
+    inverseInto(below, counts[level]!, inverse);
+    for (let bus = 0; bus < buses.length; bus++) {
+      const offset = (bus * counts.length + level) * m;
+      const q = above[bus]!;
+      if (q === null) rootInto(inverse, out, offset);
+      else quotientInto(q, counts[level]!, inverse, out, offset);
+    }
+  }
+}
+
+function emptyQuadratic(m: number): Quadratic {
+  return { a: new Float64Array(m), b: new Float64Array(m), c: new Float64Array(m) };
+}
+
+// |Y₀·z_ii + n·y·w|² as a quadratic in n.
+function numeratorInto(
+  bank: ComplexColumn,
+  { self, toBank }: { self: ComplexColumn; toBank: ComplexColumn },
+  stage: ComplexColumn,
+  q: Quadratic,
+): void {
+  for (let i = 0; i < q.a.length; i++) {
+    const gRe = bank.re[i]!;
+    const gIm = bank.im[i]!;
+    const zRe = self.re[i]!;
+    const zIm = self.im[i]!;
+    const tRe = toBank.re[i]! * toBank.re[i]! - toBank.im[i]! * toBank.im[i]!;
+    const tIm = 2 * toBank.re[i]! * toBank.im[i]!;
+    const wRe = zRe - (tRe * gRe - tIm * gIm);
+    const wIm = zIm - (tRe * gIm + tIm * gRe);
+    const aRe = gRe * zRe - gIm * zIm;
+    const aIm = gRe * zIm + gIm * zRe;
+    const bRe = stage.re[i]! * wRe - stage.im[i]! * wIm;
+    const bIm = stage.re[i]! * wIm + stage.im[i]! * wRe;
+    q.a[i] = aRe * aRe + aIm * aIm;
+    q.b[i] = 2 * (aRe * bRe + aIm * bIm);
+    q.c[i] = bRe * bRe + bIm * bIm;
+  }
+}
+
+function inverseInto({ a, b, c }: Quadratic, count: number, inverse: Float64Array): void {
+  for (let i = 0; i < a.length; i++) inverse[i] = 1 / (a[i]! + count * (b[i]! + count * c[i]!));
+}
+
+function rootInto(inverse: Float64Array, out: Float64Array, offset: number): void {
+  for (let i = 0; i < inverse.length; i++) out[offset + i] = Math.sqrt(inverse[i]!);
+}
+
+// Five parameters: an innermost kernel, no object a level and bus.
+// biome-ignore lint/complexity/useMaxParams: see above
+function quotientInto(
+  { a, b, c }: Quadratic,
+  count: number,
+  inverse: Float64Array,
+  out: Float64Array,
+  offset: number,
+): void {
+  for (let i = 0; i < a.length; i++) {
+    out[offset + i] = Math.sqrt((a[i]! + count * (b[i]! + count * c[i]!)) * inverse[i]!);
+  }
+}
+
+/**
+ * |Y(h)|² at the bus with a count of stages of each group connected: Y = Y₀ + Σ n_g·y_g, at least 1e-24 S².
  * @param bus Y₀ over orders [S], length m
  * @param stages y of one stage of each group over the same orders [S]
  * @param vector connected stages per group
@@ -65,6 +155,6 @@ export function admittanceSquareInto(
       g += vector[k]! * stages[k]!.re[i]!;
       b += vector[k]! * stages[k]!.im[i]!;
     }
-    out[i] = g * g + b * b;
+    out[i] = Math.max(LEAST_SIEMENS * LEAST_SIEMENS, g * g + b * b);
   }
 }

@@ -52,20 +52,3 @@ export function injectedOrders(load: DistortingLoad): OrderPct[] {
 function isBankSequence(name: SpectrumName): (order: OrderPct) => boolean {
   return ({ orderH }) => name !== 'single-phase-electronic' || orderH % 3 !== 0;
 }
-
-/**
- * Neutral current of loads with zero-sequence triplens: three times the root sum of squares of the phase triplens.
- * @param loads distorting loads
- * @returns rms neutral current [A]
- * @source derived: zero-sequence currents of the three phases add in the neutral
- */
-export function neutralA(loads: readonly DistortingLoad[]): number {
-  let square = 0;
-  for (const load of loads) {
-    if (load.orders !== undefined || load.spectrum !== 'single-phase-electronic') continue;
-    for (const { orderH, pct } of SPECTRA[load.spectrum].orders) {
-      if (orderH % 3 === 0) square += ((3 * pct) / 100) ** 2 * load.fundamentalA ** 2;
-    }
-  }
-  return Math.sqrt(square);
-}

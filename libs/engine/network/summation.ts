@@ -1,5 +1,5 @@
 import type { Loads } from './loads.js';
-import { HIGHEST_ORDER_H, injectedOrders } from './spectra.js';
+import { HIGHEST_ORDER_H, injectedOrders, SPECTRA } from './spectra.js';
 
 /**
  * Summation exponent of an order: 1 below 5, 1.4 from 5 to 10, 2 above; 1 throughout for arithmetic summation.
@@ -40,6 +40,28 @@ export interface Excitation {
   backgroundV: Float64Array;
 }
 
+// Currents with angles are one phasor sum; each of the others stands for itself.
+function currentsByOrder(loads: Loads): Map<number, number[]> {
+  const phasors = new Map<number, { re: number; im: number }>();
+  const found = new Map<number, number[]>();
+  for (const load of loads.distorting ?? []) {
+    for (const { orderH, pct, angleDeg } of injectedOrders(load)) {
+      const a = (load.fundamentalA * pct) / 100;
+      if (angleDeg === undefined) {
+        found.set(orderH, [...(found.get(orderH) ?? []), a]);
+        continue;
+      }
+      const angle = (angleDeg * Math.PI) / 180;
+      const sum = phasors.get(orderH) ?? { re: 0, im: 0 };
+      phasors.set(orderH, { re: sum.re + a * Math.cos(angle), im: sum.im + a * Math.sin(angle) });
+    }
+  }
+  for (const [orderH, { re, im }] of phasors) {
+    found.set(orderH, [Math.sqrt(re * re + im * im), ...(found.get(orderH) ?? [])]);
+  }
+  return found;
+}
+
 /**
  * Combines the distorting loads and lists the background at every order present. All loads stand at one bus, so each
  * quantity is proportional to a load's current and the loads may be combined before the network is applied.
@@ -51,11 +73,12 @@ export interface Excitation {
 export function excitation(loads: Loads, nominalV: number): Excitation {
   const injected = new Map<number, number>();
   const background = new Map<number, number>();
-  for (const load of loads.distorting ?? []) {
-    for (const { orderH, pct } of injectedOrders(load)) {
-      const alpha = summationExponent(orderH, loads.summation);
-      injected.set(orderH, combine(injected.get(orderH) ?? 0, (load.fundamentalA * pct) / 100, alpha));
-    }
+  for (const [orderH, magnitudesA] of currentsByOrder(loads)) {
+    const alpha = summationExponent(orderH, loads.summation);
+    injected.set(
+      orderH,
+      magnitudesA.reduce((sum, a) => combine(sum, a, alpha), 0),
+    );
   }
   for (const { orderH, pct } of loads.backgroundPct ?? []) {
     if (orderH > HIGHEST_ORDER_H || !(pct > 0)) continue;
@@ -68,4 +91,24 @@ export function excitation(loads: Loads, nominalV: number): Excitation {
     injectedA: ordersH.map((h) => injected.get(h) ?? 0),
     backgroundV: ordersH.map((h) => background.get(h) ?? 0),
   };
+}
+
+/**
+ * Neutral current of loads with zero-sequence triplens: per order the loads combined as everywhere, then three times the
+ * root sum of squares over the orders.
+ * @param loads settled loads; an unknown list counts as empty here
+ * @returns rms neutral current [A]
+ * @source derived: zero-sequence currents of the three phases add in the neutral; iec-tr-61000-3-6 between loads
+ */
+export function neutralA(loads: Pick<Loads, 'distorting' | 'summation'>): number {
+  const phaseA = new Map<number, number>();
+  for (const load of loads.distorting ?? []) {
+    if (load.orders !== undefined || load.spectrum !== 'single-phase-electronic') continue;
+    for (const { orderH, pct } of SPECTRA[load.spectrum].orders) {
+      if (orderH % 3 !== 0) continue;
+      const alpha = summationExponent(orderH, loads.summation);
+      phaseA.set(orderH, combine(phaseA.get(orderH) ?? 0, (load.fundamentalA * pct) / 100, alpha));
+    }
+  }
+  return 3 * Math.sqrt([...phaseA.values()].reduce((sum, a) => sum + a * a, 0));
 }

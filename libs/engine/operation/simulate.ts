@@ -1,19 +1,9 @@
 import type { Control } from './control.js';
-import { type Decision, nearestLevelInto, oneByOneInto } from './decide.js';
+import type { ControllerView } from './controller-view.js';
+import { type Decision, oneByOneInto } from './decide.js';
+import { NearestLevel } from './nearest-level.js';
+import { oneSizeInto } from './one-size-into.js';
 import type { SwitchedBank } from './switched-bank.js';
-
-/** What the controller sees, one entry a valid interval, length n. */
-export interface ControllerView {
-  intervalS: number;
-  /** UTC epoch seconds, ascending [s] */
-  beginS: Float64Array;
-  /** Q − P⁺·tan φ_set at the bus [kvar] */
-  wantedKvar: Float64Array;
-  /** (U/U_nom)² where the record has a voltage column, else null */
-  voltageScale: Float64Array | null;
-  /** 1 where a standby supply runs and the bank is held off, else null */
-  standby: Uint8Array | null;
-}
 
 /** The year as switched; length n but for `switchings`. */
 export interface SwitchingRun {
@@ -30,13 +20,22 @@ export interface SwitchingRun {
  * @param bank the controller's view of the bank
  * @param control settings
  * @param view what the controller sees, length n
+ * @param connectedKvar receives the connected kvar, length n; new where absent
  * @returns connected kvar per interval and switchings per stage
  * @source method-controller
  */
-export function simulate(bank: SwitchedBank, control: Control, view: ControllerView): SwitchingRun {
+export function simulate(
+  bank: SwitchedBank,
+  control: Control,
+  view: ControllerView,
+  connectedKvar = new Float64Array(view.beginS.length),
+): SwitchingRun {
+  const plain = view.voltageScale === null && view.standby === null;
+  if (plain && bank.classes.length === 1 && control.mode === 'nearestLevel') {
+    return { connectedKvar, switchings: oneSizeInto(bank, control, view, connectedKvar) };
+  }
   const state = new SwitchState(bank, control, view.intervalS);
-  const connectedKvar = new Float64Array(view.beginS.length);
-  if (view.voltageScale === null && view.standby === null) runPlainInto(state, view, connectedKvar);
+  if (plain) runPlainInto(state, view, connectedKvar);
   else runFullInto(state, view, connectedKvar);
   return { connectedKvar, switchings: state.switchings };
 }
@@ -105,7 +104,10 @@ class SwitchState {
   readonly #control: Control;
   readonly #on: Uint8Array;
   readonly #offSinceS: Float64Array;
+  /** per class, the moment from which every stage that is off is free */
+  readonly #allFreeFromS: Float64Array;
   readonly #decision: Decision;
+  readonly #nearest: NearestLevel;
 
   constructor(bank: SwitchedBank, control: Control, intervalS: number) {
     this.#bank = bank;
@@ -115,6 +117,7 @@ class SwitchState {
     this.bandKvar = bank.classes.length === 0 ? Number.POSITIVE_INFINITY : control.responseRatio * bank.smallestKvar;
     this.#on = new Uint8Array(bank.stageCount);
     this.#offSinceS = new Float64Array(bank.stageCount).fill(Number.NEGATIVE_INFINITY);
+    this.#allFreeFromS = new Float64Array(bank.classes.length).fill(Number.NEGATIVE_INFINITY);
     const perInterval = Math.floor(intervalS / control.stepDelayS);
     this.#decision = {
       connected: new Int32Array(bank.classes.length),
@@ -125,6 +128,7 @@ class SwitchState {
       wantedKvar: 0,
       bandKvar: this.bandKvar,
     };
+    this.#nearest = new NearestLevel(bank, this.#decision);
   }
 
   decide(beginS: number, wantedKvar: number, scale: number): number {
@@ -132,9 +136,10 @@ class SwitchState {
     decision.wantedKvar = wantedKvar;
     decision.voltageScale = scale;
     this.#countFree(beginS);
-    if (this.#control.mode === 'nearestLevel') nearestLevelInto(this.#bank, decision);
+    if (this.#control.mode === 'nearestLevel') this.#nearest.choose();
     else oneByOneInto(this.#bank, decision);
     for (let c = 0; c < decision.chosen.length; c++) {
+      if (decision.chosen[c] === decision.connected[c]) continue;
       for (let k = decision.connected[c]!; k < decision.chosen[c]!; k++) this.#connectOne(c, beginS);
       for (let k = decision.connected[c]!; k > decision.chosen[c]!; k--) this.#disconnectOne(c, beginS);
       decision.connected[c] = decision.chosen[c]!;
@@ -166,15 +171,21 @@ class SwitchState {
   }
 
   #countFree(beginS: number): void {
-    const delayS = this.#control.reconnectDelayS;
-    for (let c = 0; c < this.#bank.classes.length; c++) {
+    const { free, connected } = this.#decision;
+    for (let c = 0; c < free.length; c++) {
       const { stages } = this.#bank.classes[c]!;
-      let free = 0;
-      for (let k = 0; k < stages.length; k++) {
-        if (this.#on[stages[k]!] === 0 && beginS >= this.#offSinceS[stages[k]!]! + delayS) free++;
-      }
-      this.#decision.free[c] = free;
+      const allFree = beginS >= this.#allFreeFromS[c]!;
+      free[c] = allFree ? stages.length - connected[c]! : this.#freeStages(stages, beginS);
     }
+  }
+
+  #freeStages(stages: Int32Array, beginS: number): number {
+    const delayS = this.#control.reconnectDelayS;
+    let free = 0;
+    for (let k = 0; k < stages.length; k++) {
+      if (this.#on[stages[k]!] === 0 && beginS >= this.#offSinceS[stages[k]!]! + delayS) free++;
+    }
+    return free;
   }
 
   #connectOne(c: number, beginS: number): void {
@@ -204,6 +215,7 @@ class SwitchState {
     if (pick < 0) throw new Error('no connected stage to disconnect');
     this.#on[pick] = 0;
     this.#offSinceS[pick] = beginS;
+    this.#allFreeFromS[c] = beginS + this.#control.reconnectDelayS;
     this.switchings[pick]!++;
   }
 }

@@ -8,8 +8,8 @@ import { effectiveKvar } from '../layout/stage.js';
 import type { Control } from '../operation/control.js';
 import { meetsTarget } from '../operation/operation.js';
 import { type Remark, Stopped, type Watch } from '../problem.js';
-import { basisOf, judge, overallVerdict } from './outcome-of.js';
-import { overCorrectionKvar, smallestStageKvar } from './reasons.js';
+import { basisOf, judge, overallVerdict } from './judge-basis.js';
+import { overCorrectionKvar } from './reasons.js';
 import { settleControl } from './settle-bank.js';
 import type { Site } from './site.js';
 import { type Operated, operate, type Study } from './study.js';
@@ -23,10 +23,21 @@ export interface Chosen {
   shortOf: 'onlyWatch' | 'targetOutOfReach' | 'onlyAvoid' | null;
 }
 
+/** One layout with one reactor ratio; built at the least rated voltage at which the voltage duties are clear. */
+interface Family {
+  layout: Layout;
+  reactorPct: number;
+  /** rated voltages that carry the fundamental, ascending [V] */
+  voltages: readonly number[];
+  /** null where no voltage is clear; absent until it was asked for */
+  built?: { ratedV: number; flows: Verdict } | null;
+}
+
+/** A family at one of its voltages; a candidate only where that is the voltage it is built at. */
 interface Candidate extends Sized {
+  family: Family;
+  ratedV: number;
   bank: Bank;
-  /** verdict of the flows alone; the full judgement is never milder */
-  flows: Verdict;
 }
 
 const REACTOR_QUALITY = 30;
@@ -52,6 +63,7 @@ class Chooser {
   readonly #site: Site;
   readonly #catalogue: SettledCatalogue;
   readonly #watch: Watch | undefined;
+  readonly #families = new Map<string, Family>();
 
   constructor(study: Study, site: Site, catalogue: SettledCatalogue, watch: Watch | undefined) {
     this.#study = study;
@@ -67,9 +79,10 @@ class Chooser {
     const reaching = boundKvar === null ? [] : this.#candidates(layoutsLeft, boundKvar);
     const within = this.#preferredWithin(reaching);
     if (within !== null) return within;
-    const all = this.#candidates(layoutsLeft, 0);
+    const all = this.#candidates(layoutsLeft, 0).filter((candidate) => this.#flows(candidate) !== null);
     if (all.length === 0) return null;
-    return this.#nearest(all) ?? this.#despiteLimits(reaching.length > 0 ? reaching : all);
+    const met = reaching.filter((candidate) => this.#flows(candidate) !== null);
+    return this.#nearest(all) ?? this.#despiteLimits(met.length > 0 ? met : all);
   }
 
   // The first that meets the target, does not over-correct and is clear; else the first that is `watch`.
@@ -77,7 +90,8 @@ class Chooser {
     let watched: Chosen | null = null;
     for (const [k, candidate] of reaching.entries()) {
       this.#step(k / reaching.length);
-      if (candidate.flows === 'avoid' || (watched !== null && candidate.flows === 'watch')) continue;
+      const flows = this.#flows(candidate);
+      if (flows === null || flows === 'avoid' || (watched !== null && flows === 'watch')) continue;
       const operated = this.#leastSetPoint(candidate);
       if (operated === null) continue;
       const verdict = overallVerdict(this.#study, judge(this.#study, candidate.bank, operated.control));
@@ -107,39 +121,70 @@ class Chooser {
     this.#watch?.report(0.1 + 0.8 * fraction);
   }
 
-  // Per layout and reactor ratio the least rated voltage at which the voltage duties are clear. A higher voltage only
-  // makes the bank smaller, so a layout that falls below the bound is done.
+  // Every layout, reactor ratio and voltage that could be built, in order of preference; which of a family's voltages it
+  // is built at is judged when a candidate is first looked at. A higher voltage only makes the bank smaller, so a layout
+  // that falls below the bound is done.
   #candidates(found: readonly Layout[], boundKvar: number): Candidate[] {
-    const greatestKvar = this.#study.load.reactiveKvar.reduce((most, q) => Math.max(most, q), 0);
+    const greatestKvar = this.#greatestKvar();
     const candidates: Candidate[] = [];
     for (const reactorPct of this.#catalogue.reactorPct) {
       const voltages = this.#catalogue.ratedV.filter((ratedV) => this.#carriesFundamental(ratedV, reactorPct));
       for (const layout of found) {
-        const bank = this.#atLeastVoltage(layout, reactorPct, { voltages, boundKvar, greatestKvar });
-        if (bank !== null) candidates.push(bank);
+        const family = this.#family(layout, reactorPct, voltages);
+        for (const ratedV of voltages) {
+          const candidate = this.#candidate(family, ratedV);
+          if (candidate.effectiveKvar < boundKvar) break;
+          if (!this.#tooLarge(candidate, greatestKvar)) candidates.push(candidate);
+        }
       }
     }
     return candidates.sort(preferred);
   }
 
-  #atLeastVoltage(
-    layout: Layout,
-    reactorPct: number,
-    within: { voltages: readonly number[]; boundKvar: number; greatestKvar: number },
-  ): Candidate | null {
-    for (const ratedV of within.voltages) {
+  #family(layout: Layout, reactorPct: number, voltages: readonly number[]): Family {
+    const key = `${layout.count} ${layout.sizeKvar} ${layout.halves} ${reactorPct}`;
+    const known = this.#families.get(key) ?? { layout, reactorPct, voltages };
+    this.#families.set(key, known);
+    return known;
+  }
+
+  #candidate(family: Family, ratedV: number): Candidate {
+    const { layout, reactorPct } = family;
+    const bank = this.#bank(layout, ratedV, reactorPct);
+    const kvar = bank.groups.map((group) => effectiveKvar(group, this.#study.site.nominalV));
+    return {
+      family,
+      ratedV,
+      bank,
+      effectiveKvar: this.#totalKvar(bank),
+      stages: layout.count + layout.halves,
+      smallestKvar: Math.min(...kvar),
+      reactorPct,
+    };
+  }
+
+  // Verdict of the flows alone, which the full judgement is never milder than; null at a voltage that is not the family's.
+  #flows({ family, ratedV }: Candidate): Verdict | null {
+    if (family.built === undefined) family.built = this.#leastClearVoltage(family);
+    return family.built?.ratedV === ratedV ? family.built.flows : null;
+  }
+
+  #leastClearVoltage({ layout, reactorPct, voltages }: Family): { ratedV: number; flows: Verdict } | null {
+    for (const ratedV of voltages) {
       const bank = this.#bank(layout, ratedV, reactorPct);
-      const totalKvar = this.#totalKvar(bank);
-      if (totalKvar < within.boundKvar) return null;
-      const smallestKvar = smallestStageKvar(this.#study, bank);
-      if (this.#tooLarge(totalKvar, smallestKvar, within.greatestKvar)) continue;
       const quick = quickJudge(this.#study.model, bank, this.#basis(bank));
-      if (quick.voltages !== 'clear') continue;
-      const stages = layout.count + layout.halves;
-      const flows = this.#opened(quick.verdict);
-      return { bank, flows, effectiveKvar: totalKvar, stages, smallestKvar, reactorPct };
+      if (quick.voltages === 'clear') return { ratedV, flows: this.#opened(quick.verdict) };
     }
     return null;
+  }
+
+  // Most that could be wanted of a bank, as effective kvar at nominal voltage.
+  #greatestKvar(): number {
+    const { load, voltageScale } = this.#study;
+    return load.reactiveKvar.reduce((most, q, i) => {
+      const scale = voltageScale === null ? 1 : voltageScale[i]!;
+      return scale > 0 ? Math.max(most, q / scale) : most;
+    }, 0);
   }
 
   // Fundamental voltage alone, in the corner of greatest p: a cheap necessary condition of clear voltage duties.
@@ -153,9 +198,14 @@ class Chooser {
     return rise > 0 && Math.max(highest, continuous) <= NEAR_RATIO.voltage;
   }
 
-  #tooLarge(totalKvar: number, smallestKvar: number, greatestKvar: number): boolean {
+  // Where every stage is free again by the next interval, one that no load calls for is never connected and changes
+  // nothing; where a delay lasts longer it may stand in for another.
+  #tooLarge({ bank, effectiveKvar: totalKvar, smallestKvar }: Candidate, greatestKvar: number): boolean {
     const { maxTotalKvar } = this.#catalogue;
-    return maxTotalKvar === null ? totalKvar - smallestKvar >= greatestKvar : totalKvar > maxTotalKvar;
+    if (maxTotalKvar !== null) return totalKvar > maxTotalKvar;
+    if (this.#basis(bank).reconnectDelayS > this.#study.record.intervalS) return false;
+    const largestKvar = Math.max(...bank.groups.map((group) => effectiveKvar(group, this.#study.site.nominalV)));
+    return totalKvar - largestKvar - smallestKvar >= greatestKvar;
   }
 
   #opened(verdict: Verdict): Verdict {
@@ -204,7 +254,7 @@ class Chooser {
     const setPointPowerFactor = setPoints[setPoints.length - 1]!;
     let best: { candidate: Candidate; control: Control; lowest: number } | null = null;
     for (const candidate of all) {
-      if (candidate.flows === 'avoid') continue;
+      if (this.#flows(candidate) === 'avoid') continue;
       const operated = this.#operated(candidate, setPointPowerFactor);
       const lowest = operated.months.reduce((low, month) => Math.min(low, month.powerFactorLagging ?? 1), 1);
       if (best !== null && lowest <= best.lowest + 1e-9) continue;

@@ -1,5 +1,6 @@
 import type { Bank } from '../layout/bank.js';
-import { neutralA } from '../network/spectra.js';
+import { strongestInto } from '../network/network-check.js';
+import { neutralA } from '../network/summation.js';
 import { supplyPath } from '../supply/supply-path.js';
 import { bankFigures } from './bank-figures.js';
 import { type Figure, figure } from './figure.js';
@@ -88,6 +89,7 @@ function requirementFigures(study: Study, result: Result): Figure[] {
 
 function supplyFigures(study: Study, result: Result): Figure[] {
   const { supply, nominalV } = study.site;
+  if (study.model.nodal !== null) return [nodalFigure(study, result)];
   const ends = [
     {
       id: 'network.shortCircuitMva',
@@ -132,6 +134,22 @@ function supplyFigures(study: Study, result: Result): Figure[] {
   });
 }
 
+// In a network of several buses the strongest standing's own impedance; the path alone would give another number.
+function nodalFigure(study: Study, result: Result): Figure {
+  const z = new Float64Array(2);
+  strongestInto(study.model, z);
+  return figure(
+    'network.shortCircuitMva',
+    { value: result.network.shortCircuitMva, unit: 'MVA' },
+    { formula: 'U^2 / √(R^2 + X^2) / 1000', source: 'method, network, the strongest standing' },
+    [
+      ['U', study.site.nominalV, 'V'],
+      ['R', 1000 * z[0]!, 'mΩ'],
+      ['X', 1000 * z[1]!, 'mΩ'],
+    ],
+  );
+}
+
 function parallelOhm(parts: readonly { rOhm: number; xOhm: number }[]): { rOhm: number; xOhm: number } {
   if (parts.length === 0) return { rOhm: 0, xOhm: 0 };
   let g = 0;
@@ -162,7 +180,7 @@ function operationFigures(study: Study, bank: Bank, operated: Operated, result: 
     );
   }
   if (bank.groups.length > 0) found.push(...transformerFigures(study, operated));
-  const neutral = neutralA(study.site.loads.distorting ?? []);
+  const neutral = neutralA(study.site.loads);
   if (neutral > 0) {
     found.push(
       figure(

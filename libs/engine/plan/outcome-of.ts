@@ -1,15 +1,23 @@
-import { type JudgeBasis, type Judgement, judgeBank } from '../duty/judge-bank.js';
+import { ageing } from '../duty/ageing.js';
+import { type Devices, devices } from '../duty/devices.js';
+import type { Judgement } from '../duty/judge-bank.js';
+import { limitsPoint } from '../duty/limits-point.js';
 import { marginMap } from '../duty/margin-map.js';
+import { type MeasuredCheck, measuredCheck } from '../duty/measured-check.js';
 import { CAPACITOR_RULES, graver, type Verdict } from '../duty/rules.js';
 import type { Bank } from '../layout/bank.js';
 import { bankLevels, summarizeBank } from '../layout/levels.js';
+import type { MeasuredDistortion } from '../network/loads.js';
 import type { Control } from '../operation/control.js';
 import { summarizeOperation } from '../operation/operation.js';
 import type { Remark } from '../problem.js';
 import { cautions } from './cautions.js';
+import { deviceFigures } from './device-figures.js';
 import { figures } from './figures.js';
+import { basisOf, judge, overallVerdict } from './judge-basis.js';
 import type { Outcome, Rival } from './outcome.js';
 import { reasons } from './reasons.js';
+import { type Beside, copyNote, pointAssumption, reasonsBeside, verdictBeside } from './reasons-beside.js';
 import type { Result } from './result.js';
 import { type Operated, operate, type Study } from './study.js';
 
@@ -20,6 +28,8 @@ const RIVAL_REACTOR_PCT = 7;
 export interface Said {
   reasons: Remark[];
   assumptions: Remark[];
+  /** no better than this, whatever its figures say; `clear` where absent */
+  atBest?: Verdict;
 }
 
 /**
@@ -43,6 +53,7 @@ export function outcomeOf(
   const conductorMinA =
     (CAPACITOR_RULES[study.site.rules].conductorRatio * bankSummary.effectiveKvar * 1000) /
     (Math.sqrt(3) * study.site.nominalV);
+  const { beside, equipment } = besideOf(kind, study, { bank, control, judgement, conductorMinA });
   const result: Result = {
     record: study.recordSummary,
     requirement: study.requirement,
@@ -54,15 +65,29 @@ export function outcomeOf(
     charge: { stages: judgement.charge },
     inrush: { stages: judgement.inrush },
     conductorMinA,
+    ...beside,
     robustness: null,
+    reactorTrials: [],
     money: null,
-    verdict: overallVerdict(study, judgement),
-    reasons: [...said.reasons, ...reasons(study, bank, operated, judgement)],
-    assumptions: [...study.assumptions, ...said.assumptions],
+    verdict: graver(graver(overallVerdict(study, judgement), said.atBest ?? 'clear'), verdictBeside(beside)),
+    reasons: [
+      ...said.reasons,
+      ...reasons(study, bank, operated, judgement),
+      ...reasonsBeside(study, bank, { control, duties: judgement.duties }, beside),
+    ],
+    assumptions: [
+      ...study.assumptions,
+      ...pointAssumption(study, beside.limits),
+      ...copyNote(study),
+      ...said.assumptions,
+    ],
     cautions: cautions(judgement),
     figures: [],
   };
-  result.figures = figures(study, bank, operated, result);
+  result.figures = [
+    ...figures(study, bank, operated, result),
+    ...(equipment === null ? [] : deviceFigures(study, bank, control, equipment)),
+  ];
   return {
     kind,
     site: study.site,
@@ -71,51 +96,38 @@ export function outcomeOf(
     bank,
     result,
     series: series(study, operated),
+    loadA: study.model.loadA,
     margins: marginMap(study.model, bank, levels, basisOf(study, control)),
     rival: rivalOf(study, bank, control, result.verdict),
   };
 }
 
-/**
- * What a bank on this study is judged by.
- * @param study site and record
- * @param control settings
- * @returns rules, voltages, supply, loads and delay
- */
-export function basisOf(study: Study, control: Control): JudgeBasis {
-  const { site } = study;
-  return {
-    rules: site.rules,
-    frequencyHz: site.frequencyHz,
-    voltages: { nominalV: site.nominalV, highestV: site.highestV },
-    emcClass: site.emcClass,
-    supply: site.supply,
-    loads: site.loads,
-    reconnectDelayS: control.reconnectDelayS,
+// A plan does without what the site's own bank has: it says nothing of the one that is proposed.
+function besideOf(
+  kind: Outcome['kind'],
+  study: Study,
+  choice: { bank: Bank; control: Control; judgement: Judgement; conductorMinA: number },
+): { beside: Beside; equipment: Devices | null } {
+  const { bank, control, judgement, conductorMinA } = choice;
+  const { model, site } = study;
+  const judge = basisOf(study, control);
+  const facts = { ...site.facts, bank: kind === 'plan' ? null : site.facts.bank };
+  const levels = bankLevels(bank, site.nominalV);
+  const equipment =
+    bank.groups.length === 0 ? null : devices(model, bank, levels, { judge, judgement, control, conductorMinA, facts });
+  const beside = {
+    limits: limitsPoint(model, site),
+    devices: equipment?.rows ?? [],
+    ageing: ageing(model, bank, judge, facts.bank),
+    measured: facts.measured === null ? null : measuredOf(study, kind, bank, facts.measured),
   };
+  return { beside, equipment };
 }
 
-/**
- * Judges a bank on a study's network.
- * @param study site and record
- * @param bank the bank
- * @param control settings; the reconnection delay sets the resistors
- * @returns judgement
- * @source method-limits
- */
-export function judge(study: Study, bank: Bank, control: Control): Judgement {
-  return judgeBank(study.model, bank, bankLevels(bank, study.site.nominalV), basisOf(study, control));
-}
-
-/**
- * The verdict with what the record itself leaves open: an unknown old bank is at best `watch`.
- * @param study site and record
- * @param judgement the bank judged
- * @returns overall verdict
- * @source method-controller
- */
-export function overallVerdict(study: Study, judgement: Judgement): Verdict {
-  return study.site.recordedBank.state === 'unknown' ? graver(judgement.verdict, 'watch') : judgement.verdict;
+// With a bank in, a measurement says something of the bank that was in: the site's own, not the one that is proposed.
+function measuredOf(study: Study, kind: Outcome['kind'], bank: Bank, measured: MeasuredDistortion): MeasuredCheck {
+  const compared = kind === 'plan' ? { ...bank, groups: [] } : bank;
+  return measuredCheck(study.model, compared, bankLevels(compared, study.site.nominalV), measured);
 }
 
 function series(study: Study, operated: Operated): Outcome['series'] {

@@ -1,31 +1,9 @@
 import type { MarginMap } from '../duty/margin-map.js';
-import type { RuleSet } from '../duty/rules.js';
 import type { Bank } from '../layout/bank.js';
-import type { Loads } from '../network/loads.js';
 import type { LoadRecord } from '../record/load-record.js';
 import type { ZoneTable } from '../record/zone-table.js';
-import type { Supply } from '../supply/supply.js';
 import type { Result } from './result.js';
-import type { RecordedBank } from './site.js';
-
-/** The site with every default filled in. */
-export interface SettledSite {
-  name: string;
-  asOf: string | null;
-  timeZone: string;
-  currency: string | null;
-  rules: RuleSet;
-  frequencyHz: number;
-  nominalV: number;
-  highestV: number;
-  meteredAt: 'bus' | 'primary';
-  recordedBank: RecordedBank;
-  targetPowerFactor: number;
-  onExport: 'importOnly' | 'absolute';
-  supply: Supply;
-  loads: Loads;
-  emcClass: 1 | 2 | 3;
-}
+import type { SettledSite } from './settled-site.js';
 
 /** Columns of the simulated record, one entry a valid interval, length n. */
 export interface OperationSeries {
@@ -66,6 +44,8 @@ export interface Outcome {
   bank: Bank;
   result: Result;
   series: OperationSeries;
+  /** I_L, the load current distortion is held against [A] */
+  loadA: number;
   margins: MarginMap;
   rival: Rival | null;
 }

@@ -48,6 +48,8 @@ export function planBank(site: Site, record: LoadRecord, zone: ZoneTable, watch?
         ...(chosen?.assumptions ?? []),
         ...inputLines(site, absent),
       ],
+      // A bank that falls short of the target is no clear answer, however well it stays within its limits.
+      atBest: chosen === null || chosen.shortOf !== null ? 'watch' : 'clear',
     },
   });
   watch?.report(1);

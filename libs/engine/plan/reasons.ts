@@ -6,6 +6,7 @@ import type { Bank } from '../layout/bank.js';
 import { effectiveKvar } from '../layout/stage.js';
 import { meetsTarget } from '../operation/operation.js';
 import { type Remark, remark } from '../problem.js';
+import { overwhelmingKva } from './judge-basis.js';
 import type { Operated, Study } from './study.js';
 
 /** A record shorter than this says little about a year [days]. */
@@ -26,6 +27,7 @@ export function reasons(study: Study, bank: Bank, operated: Operated, judgement:
   return [
     ...duties('avoid').map((duty) => dutyReason('limit.exceeded', duty)),
     ...duties('watch').map((duty) => dutyReason(watchCode(duty), duty)),
+    ...supplyReasons(study, judgement),
     ...networkReasons(study, bank, judgement),
     ...recordReasons(study),
     ...operationReasons(study, bank, operated),
@@ -46,6 +48,12 @@ function dutyReason(code: string, duty: Duty): Remark {
   if (duty.orderH !== null) values.orderH = duty.orderH;
   if (duty.corner !== null) Object.assign(values, duty.corner);
   return remark(code, values, { unit: duty.unit, source: duty.source });
+}
+
+function supplyReasons(study: Study, { network: { shortCircuitMinMva } }: Judgement): Remark[] {
+  const loadKva = overwhelmingKva(study, shortCircuitMinMva);
+  if (loadKva === null) return [];
+  return [remark('supply.weakerThanLoad', { shortCircuitMinMva, loadKva }, { path: 'supply.faultLevelMva' })];
 }
 
 function networkReasons(study: Study, bank: Bank, judgement: Judgement): Remark[] {

@@ -1,6 +1,10 @@
+import type { Ageing } from '../duty/ageing.js';
 import type { ChargeStage } from '../duty/charge.js';
+import type { DeviceRow } from '../duty/device-row.js';
 import type { Duty } from '../duty/duty-row.js';
 import type { InrushStage } from '../duty/inrush.js';
+import type { LimitsPoint } from '../duty/limits-point.js';
+import type { MeasuredCheck } from '../duty/measured-check.js';
 import type { Verdict } from '../duty/rules.js';
 import type { BankSummary } from '../layout/levels.js';
 import type { NetworkSummary } from '../network/network-check.js';
@@ -10,6 +14,8 @@ import type { Remark } from '../problem.js';
 import type { RecordSummary } from '../record/record-summary.js';
 import type { RequirementSummary } from '../requirement/requirement.js';
 import type { Figure } from './figure.js';
+import type { ReactorTrial } from './reactor-choice.js';
+import type { Robustness } from './robustness.js';
 
 /** The answer of `plan` and `assess`. */
 export interface Result {
@@ -19,11 +25,22 @@ export interface Result {
   control: Control;
   operation: OperationSummary;
   network: NetworkSummary;
+  /** the edition judged by, and the point it was judged at */
+  limits: LimitsPoint;
   duties: Duty[];
+  /** every device with its duty, the rating that asks for, and what the site has */
+  devices: DeviceRow[];
   charge: { stages: ChargeStage[] };
   inrush: { stages: InrushStage[] };
   conductorMinA: number;
-  robustness: null;
+  /** judged beside the corners, not among them */
+  ageing: Ageing;
+  /** null where nothing was measured */
+  measured: MeasuredCheck | null;
+  /** how firm the verdict is; null for an empty bank, and until it is asked for */
+  robustness: Robustness | null;
+  /** the bank's stages with the customary reactor ratios; empty where its groups differ in theirs, and until asked for */
+  reactorTrials: ReactorTrial[];
   money: null;
   verdict: Verdict;
   reasons: Remark[];

@@ -1,18 +1,13 @@
-import { bankLevels, type Level } from '../layout/levels.js';
-import { networkTable } from '../network/bus-admittance.js';
+import { type BusColumns, bankColumn, networkColumns, seenSquareInto } from '../network/bus-columns.js';
 import type { Corner } from '../network/corners.js';
-import { networkModel } from '../network/network-model.js';
 import { PeakFinder } from '../network/peaks.js';
-import { admittanceSquareInto } from '../network/scan-into.js';
 import { stageAdmittance, stageBranch } from '../network/stage-admittance.js';
-import { InputProblem } from '../problem.js';
-import { settleBank } from './settle-bank.js';
-import { settleSite } from './settle-site.js';
+import { chosenCorner, chosenLevel, chosenOrders, networkScene } from './network-scene.js';
 import type { Site } from './site.js';
 
 /** |Z| at the bus over order, in one corner. */
 export interface ScannedLevel {
-  bus: 'main';
+  bus: string;
   levelKvar: number;
   corner: Corner;
   parallelOrderH: number | null;
@@ -21,65 +16,54 @@ export interface ScannedLevel {
   impedanceOhm: number[];
 }
 
-/** A level asked for may be this far from one the bank has [kvar]. */
-const LEVEL_REACH_KVAR = 0.5;
+/** What a scan may be asked for. */
+export interface ScanOptions {
+  /** the bank's highest where absent [kvar] */
+  levelKvar?: number;
+  /** place in the list of corners, 0 the nominal one; every corner where absent */
+  corner?: number;
+  /** orders h ≥ 1 to compute */
+  ordersH: Float64Array;
+}
 
 /**
- * Network impedance over order at one level, nominal and every corner. Without a record the damping load is 0 unless
- * the site gives it.
+ * Network impedance over order at one level, nominal and every corner, at every bus. Without a record the damping load
+ * is 0 unless the site gives it.
  * @param site validated site
- * @param options level [kvar], the bank's highest where absent; orders h ≥ 1 to compute
- * @returns one entry a corner, nominal first
- * @throws InputProblem where no level is within 0.5 kvar of the one asked for
+ * @param options level, corner, orders
+ * @returns one entry a bus and corner, nominal first
+ * @throws InputProblem where no level is within 0.5 kvar of the one asked for, there is no such corner, or an order is below 1
  * @source method-network
  */
-export function scanSite(
-  site: Site,
-  options: { levelKvar?: number; ordersH: Float64Array },
-): { levels: ScannedLevel[] } {
-  const { site: settled } = settleSite(site, null);
-  const { bank } = settleBank(site.bank ?? { stages: [] }, site.frequencyHz);
-  const level = chosenLevel(bankLevels(bank, settled.nominalV), options.levelKvar);
+export function scanSite(site: Site, options: ScanOptions): { levels: ScannedLevel[] } {
+  const { site: settled, bank, levels, model } = networkScene(site);
+  const ordersH = chosenOrders(options.ordersH);
+  const level = chosenLevel(levels, options.levelKvar);
+  const corners = options.corner === undefined ? model.corners.corners : [chosenCorner(model, options.corner)];
   const vector = level.vectors[0]!;
-  const model = networkModel(settled.supply, settled.loads, settled.nominalV, 0);
   const finder = new PeakFinder(model, bank);
-  const square = new Float64Array(options.ordersH.length);
+  const square = new Float64Array(ordersH.length);
   const exponent = settled.supply.resistanceExponent;
-  return {
-    levels: model.corners.corners.map((corner) => {
-      const table = networkTable(model.corners.networks[corner.network]!, model.damping, options.ordersH);
-      const factors = model.corners.factors[corner.factors]!;
-      const stages = bank.groups.map((group) =>
-        stageAdmittance(stageBranch(group, factors, exponent), options.ordersH),
-      );
-      admittanceSquareInto(table.bus, stages, vector, square);
-      const peak = finder.greatest(vector, corner);
+  const perNetwork: BusColumns[][] = [];
+  const scanned = corners.map((corner) => {
+    perNetwork[corner.network] ??= networkColumns(model, corner.network, ordersH);
+    const columns = perNetwork[corner.network]!;
+    const factors = model.corners.factors[corner.factors]!;
+    const stages = bank.groups.map((group) => stageAdmittance(stageBranch(group, factors, exponent), ordersH));
+    const connected = bankColumn(stages, vector, ordersH.length);
+    return model.buses.map((bus, k): ScannedLevel => {
+      seenSquareInto(columns[k]!, connected, square);
+      const peak = finder.greatest(vector, corner, k);
       return {
-        bus: 'main' as const,
+        bus,
         levelKvar: level.levelKvar,
         corner: corner.corner,
         parallelOrderH: peak?.orderH ?? null,
         peakOhm: peak?.impedanceOhm ?? null,
-        orders: Array.from(options.ordersH),
+        orders: Array.from(ordersH),
         impedanceOhm: Array.from(square, (y) => 1 / Math.sqrt(y)),
       };
-    }),
-  };
-}
-
-function chosenLevel(levels: readonly Level[], levelKvar: number | undefined): Level {
-  if (levelKvar === undefined) return levels[levels.length - 1]!;
-  const nearest = levels.reduce((best, level) =>
-    Math.abs(level.levelKvar - levelKvar) < Math.abs(best.levelKvar - levelKvar) ? level : best,
-  );
-  if (Math.abs(nearest.levelKvar - levelKvar) <= LEVEL_REACH_KVAR) return nearest;
-  throw new InputProblem([
-    {
-      code: 'unknown-level',
-      path: 'level',
-      expected: `one of the levels ${levels.map((level) => level.levelKvar).join(', ')}`,
-      found: `${levelKvar}`,
-      unit: 'kvar',
-    },
-  ]);
+    });
+  });
+  return { levels: model.buses.flatMap((_, k) => scanned.map((buses) => buses[k]!)) };
 }

@@ -3,11 +3,14 @@ import type { RuleSet } from '../duty/rules.js';
 import type { Bank, BankInput, StageGroup, StageGroupInput } from '../layout/bank.js';
 import type { Control } from '../operation/control.js';
 import { InputProblem, type Remark, remark } from '../problem.js';
+import type { Site } from './site.js';
 
 const INTER_STAGE_UH = 2;
 const REACTOR_QUALITY = 30;
 /** A stated reactor ratio may differ from the nameplate's own by this share before it is a finding. */
 const RATIO_TOLERANCE = 0.03;
+/** p·1.10·1.03 stays below 1 in every corner. */
+const MOST_REACTOR_PCT = 88;
 
 /**
  * A bank as the site file gives it, defaults filled in; where nameplate µF and mH stand, p is derived from them.
@@ -57,12 +60,12 @@ interface GroupContext {
 function settleGroup(stage: StageGroupInput, g: number, context: GroupContext): StageGroup {
   const path = `bank.stages[${g}]`;
   const reactorPct = reactorRatioPct(stage, path, context);
-  if (!(reactorPct >= 0 && reactorPct < 100)) {
+  if (!(reactorPct >= 0 && reactorPct < MOST_REACTOR_PCT)) {
     throw new InputProblem([
       {
         code: 'out-of-range',
         path: `${path}.reactorPct`,
-        expected: '0 to below 100',
+        expected: `0 to below ${MOST_REACTOR_PCT}: at +10 % capacitance and +3 % inductance it must stay below 100`,
         found: `${reactorPct}`,
         unit: '%',
       },
@@ -92,7 +95,10 @@ function reactorRatioPct(stage: StageGroupInput, path: string, context: GroupCon
   const omega = 2 * Math.PI * context.frequencyHz;
   const deltaUf = stage.capacitanceUf ?? (stage.ratedKvar * 1e9) / (3 * omega * stage.ratedV * stage.ratedV);
   const derived = 100 * omega * omega * stage.reactorMh * 1e-3 * 3 * deltaUf * 1e-6;
-  if (stage.reactorPct !== undefined && Math.abs(derived - stated) > RATIO_TOLERANCE * derived) {
+  if (stage.reactorPct === undefined) {
+    const values = { given: `${stage.reactorMh} mH`, value: derived };
+    context.assumptions.push(remark('understood.value', values, { path: `${path}.reactorMh`, unit: '%' }));
+  } else if (Math.abs(derived - stated) > RATIO_TOLERANCE * derived) {
     const values = { statedPct: stated, derivedPct: derived };
     context.findings.push(remark('bank.ratioDisagrees', values, { path: `${path}.reactorPct`, unit: '%' }));
   }
@@ -108,7 +114,7 @@ function reactorRatioPct(stage: StageGroupInput, path: string, context: GroupCon
  * @source method-controller
  */
 export function settleControl(
-  given: Partial<Control> | undefined,
+  given: Site['control'],
   bank: Bank,
   basis: { targetPowerFactor: number; rules: RuleSet; frequencyHz: number },
 ): { control: Control; assumptions: Remark[] } {
@@ -132,6 +138,8 @@ export function settleControl(
   return { control, assumptions };
 }
 
-function withoutAbsent(given: Partial<Control> | undefined): Partial<Control> {
-  return Object.fromEntries(Object.entries(given ?? {}).filter(([, value]) => value !== undefined));
+// The settings alone: what is wired to the controller is no setting.
+function withoutAbsent(given: Site['control']): Partial<Control> {
+  const { currentTransformer: _, generator: __, ...settings } = given ?? {};
+  return Object.fromEntries(Object.entries(settings).filter(([, value]) => value !== undefined));
 }

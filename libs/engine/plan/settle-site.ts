@@ -1,15 +1,37 @@
-import type { Loads, LoadsInput } from '../network/loads.js';
+import { limitChoice } from '../duty/limit-editions.js';
+import type { SiteFacts } from '../duty/site-facts.js';
+import type { Loads } from '../network/loads.js';
+import { settleTopology } from '../network/settle-topology.js';
+import type { Topology } from '../network/topology.js';
 import { InputProblem, type Problem, type Remark, remark } from '../problem.js';
 import { compensatedSum } from '../quantity/compensated-sum.js';
 import type { LoadRecord } from '../record/load-record.js';
 import type { Supply, SupplyInput } from '../supply/supply.js';
-import type { SettledSite } from './outcome.js';
+import { loadProblems } from './load-problems.js';
+import { settleBank } from './settle-bank.js';
+import type { SettledSite } from './settled-site.js';
 import type { Site } from './site.js';
 
 /** A site with its defaults filled in, and a line for each of them. */
 export interface Settled {
   site: SettledSite;
   assumptions: Remark[];
+}
+
+/**
+ * The topology of a site with a network part.
+ * @param site validated site
+ * @returns the topology, or null for one bus
+ * @throws InputProblem naming every part that stands nowhere
+ */
+export function settledTopology(site: Site): Topology | null {
+  if (site.network === undefined) return null;
+  return settleTopology(site.network, {
+    nominalV: site.bus.nominalV,
+    frequencyHz: site.frequencyHz,
+    transformerBuses: (site.supply.transformers ?? []).map(({ bus }) => bus),
+    group: (capacitor) => settleBank({ stages: [capacitor], interStageUh: 1 }, site.frequencyHz).bank.groups[0]!,
+  });
 }
 
 /** Collects the values that were taken where the site file gave none. */
@@ -37,7 +59,7 @@ class Defaults {
  * @source method-conventions
  */
 export function settleSite(site: Site, record: LoadRecord | null): Settled {
-  const problems = contradictions(site);
+  const problems = [...contradictions(site), ...loadProblems(site)];
   if (problems.length > 0) throw new InputProblem(problems);
   const defaults = new Defaults();
   const hasTransformer = (site.supply.transformers ?? []).length > 0;
@@ -56,12 +78,39 @@ export function settleSite(site: Site, record: LoadRecord | null): Settled {
     targetPowerFactor: defaults.take(site.target?.powerFactor, 0.95, 'target.powerFactor'),
     onExport: defaults.take(site.target?.onExport, 'importOnly', 'target.onExport'),
     supply: settleSupply(site.supply, defaults),
-    loads: settleLoads(site.loads, record, defaults),
-    emcClass: site.rules === 'iec' ? (defaults.take(site.limits?.emcClass, 2, 'limits.emcClass') as 1 | 2 | 3) : 2,
+    loads: settleLoads(site, record, defaults),
+    topology: settledTopology(site),
+    emcClass: 2,
+    limits: limitChoice(site.rules, site.limits),
+    facts: siteFacts(site),
   };
+  // Only this edition has classes.
+  if (settled.limits.edition === 'IEC 61000-2-4:2002') {
+    settled.emcClass = defaults.take(site.limits?.emcClass, 2, 'limits.emcClass') as 1 | 2 | 3;
+  }
   if (site.recordedBank === undefined) defaults.note('default.recordedBank', 'recordedBank', {});
   if (!hasTransformer) defaults.note('supply.noTransformer', 'supply.transformers', {});
-  return { site: settled, assumptions: defaults.assumptions };
+  return { site: settled, assumptions: [...defaults.assumptions, ...understood(site)] };
+}
+
+// What stood in another form is echoed as it was understood.
+function understood(site: Site): Remark[] {
+  return (site.understood ?? []).map(({ path, given, value, unit }) =>
+    remark('understood.value', { given, value }, { path, unit }),
+  );
+}
+
+function siteFacts(site: Site): SiteFacts {
+  return {
+    place: site.place ?? {},
+    earthing: site.supply.earthing ?? null,
+    photovoltaicKw: site.supply.photovoltaicKw ?? 0,
+    fast: site.loads?.fast ?? [],
+    measured: site.loads?.measured ?? null,
+    currentTransformer: site.control?.currentTransformer ?? null,
+    generator: site.control?.generator ?? {},
+    bank: site.bank ?? null,
+  };
 }
 
 function contradictions(site: Site): Problem[] {
@@ -78,7 +127,7 @@ function contradictions(site: Site): Problem[] {
       found: 'none',
     });
   }
-  if (transformers.length > 1 && site.supply.arrangement === undefined) {
+  if (transformers.length > 1 && site.supply.arrangement === undefined && site.network === undefined) {
     problems.push({
       code: 'missing',
       path: 'supply.arrangement',
@@ -86,7 +135,7 @@ function contradictions(site: Site): Problem[] {
       found: 'nothing',
     });
   }
-  if (transformers.length > 1 && site.supply.arrangement === 'separate') {
+  if (transformers.length > 1 && site.supply.arrangement === 'separate' && site.network === undefined) {
     problems.push({
       code: 'not-supported-yet',
       path: 'supply.arrangement',
@@ -127,9 +176,14 @@ function settleSupply(supply: SupplyInput, defaults: Defaults): Supply {
   };
 }
 
-function settleLoads(loads: LoadsInput | undefined, record: LoadRecord | null, defaults: Defaults): Loads {
-  const meanKw = record === null ? 0 : Math.max(0, compensatedSum(record.activeKw) / record.activeKw.length);
-  const max = defaults.take(loads?.dampingKw?.max, meanKw, 'loads.dampingKw.max', 'kW');
+function settleLoads(site: Site, record: LoadRecord | null, defaults: Defaults): Loads {
+  const { loads } = site;
+  // Motors and loads listed in a network damp already: the mean of the record would count them twice.
+  const listed = (site.network?.motors ?? []).length + (site.network?.resistive ?? []).length > 0;
+  const meanKw = record === null || listed ? 0 : Math.max(0, compensatedSum(record.activeKw) / record.activeKw.length);
+  // A stated minimum above the mean is the user's own, and the maximum can't be less.
+  const most = Math.max(meanKw, loads?.dampingKw?.min ?? 0);
+  const max = defaults.take(loads?.dampingKw?.max, most, 'loads.dampingKw.max', 'kW');
   if (loads?.distorting?.length === 0) defaults.note('loads.distorting.none', 'loads.distorting', {});
   if (loads?.backgroundPct?.length === 0) defaults.note('loads.backgroundPct.none', 'loads.backgroundPct', {});
   return {

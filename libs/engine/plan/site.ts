@@ -1,8 +1,11 @@
+import type { LimitsInput } from '../duty/limit-editions.js';
 import type { RuleSet } from '../duty/rules.js';
+import type { BankPlace, CurrentTransformer, GeneratorRule } from '../duty/site-facts.js';
 import type { BankInput } from '../layout/bank.js';
 import type { CatalogueInput } from '../layout/catalogue.js';
 import type { Finance, PriceBook, Tariff } from '../money/papers.js';
 import type { LoadsInput } from '../network/loads.js';
+import type { NetworkInput } from '../network/topology.js';
 import type { Control } from '../operation/control.js';
 import type { SupplyInput } from '../supply/supply.js';
 
@@ -14,6 +17,16 @@ export type RecordedBank =
   | { state: 'logged' }
   | { state: 'switching' }
   | { state: 'unknown' };
+
+/** A value that stood in the site file in another form. */
+export interface Understood {
+  path: string;
+  /** as it was given */
+  given: string;
+  /** as it is used, in `unit` */
+  value: number;
+  unit: string;
+}
 
 /** The site file once it is validated: plain numbers in the unit of each name; optional parts as given. */
 export interface Site {
@@ -29,13 +42,19 @@ export interface Site {
   meteredAt?: 'bus' | 'primary';
   recordedBank?: RecordedBank;
   target?: { powerFactor?: number; onExport?: 'importOnly' | 'absolute' };
-  control?: Partial<Control>;
+  control?: Partial<Control> & { currentTransformer?: CurrentTransformer; generator?: GeneratorRule };
   supply: SupplyInput;
   loads?: LoadsInput;
+  /** the network where the site has several buses */
+  network?: NetworkInput;
   bank?: BankInput;
-  limits?: { emcClass?: 1 | 2 | 3 };
+  limits?: LimitsInput;
+  /** where the bank stands */
+  place?: BankPlace;
   tariff?: Tariff;
   prices?: PriceBook;
   catalogue?: CatalogueInput;
   finance?: Finance;
+  /** values that were given in another form; none come from the site file itself */
+  understood?: Understood[];
 }

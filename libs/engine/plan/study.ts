@@ -1,9 +1,10 @@
 import type { Bank } from '../layout/bank.js';
-import { type NetworkModel, networkModel } from '../network/network-model.js';
+import { type NetworkModel, siteNetwork } from '../network/network-model.js';
 import type { Control } from '../operation/control.js';
 import { type MeterAfter, meterAfter } from '../operation/meter-after.js';
 import { type OperationMonth, operationMonths, type Simulated } from '../operation/operation.js';
-import { type ControllerView, simulate } from '../operation/simulate.js';
+import type { ControllerView } from '../operation/controller-view.js';
+import { simulate } from '../operation/simulate.js';
 import { switchedBank } from '../operation/switched-bank.js';
 import type { Remark } from '../problem.js';
 import { tanFromPowerFactor } from '../quantity/power-factor.js';
@@ -14,8 +15,8 @@ import { type BusLoad, busLoad, type Metering, type OldBank } from '../requireme
 import { needColumn, type Target, targetKw } from '../requirement/need.js';
 import { type RequirementSummary, summarizeRequirement } from '../requirement/requirement.js';
 import { transformerPassage } from '../supply/transformer-passage.js';
-import type { SettledSite } from './outcome.js';
 import { settleSite } from './settle-site.js';
+import type { SettledSite } from './settled-site.js';
 import type { Site } from './site.js';
 
 /** Everything about a site and its record that does not depend on the bank. */
@@ -64,7 +65,11 @@ export function studySite(site: Site, record: LoadRecord, zone: ZoneTable): Stud
     months,
     recordSummary: summarizeRecord(record),
     requirement: summarizeRequirement(record, needKvar, months, settled.targetPowerFactor),
-    model: networkModel(settled.supply, settled.loads, settled.nominalV, loadA),
+    model: siteNetwork(settled.supply, settled.loads, {
+      nominalV: settled.nominalV,
+      loadA,
+      topology: settled.topology,
+    }),
     voltageScale: record.voltageV?.map((u) => (u / settled.nominalV) ** 2) ?? null,
   };
 }
@@ -99,8 +104,7 @@ export interface Operated extends Simulated {
 export function operate(study: Study, bank: Bank, control: Control): Operated {
   const { record, load } = study;
   const run = simulate(switchedBank(bank, study.site.nominalV), control, controllerView(study, control));
-  const scale = study.voltageScale;
-  const deliveredKvar = scale === null ? run.connectedKvar : run.connectedKvar.map((kvar, i) => kvar * scale[i]!);
+  const deliveredKvar = atVoltage(run.connectedKvar, study.voltageScale);
   const meter = meterAfter(record, load, deliveredKvar);
   return {
     beginS: record.beginS,
@@ -132,11 +136,16 @@ export function controllerView(study: Study, control: Control): ControllerView {
 }
 
 /**
- * Meter columns with a constant kvar connected throughout; a bound on what any bank of that size can do.
+ * Meter columns with the same stages connected throughout; a bound on what any bank of that size can do.
  * @param study site and record
- * @param kvar connected at the bus [kvar]
+ * @param kvar effective kvar connected at the bus, at nominal voltage; each interval's voltage scales it [kvar]
  * @returns columns at the meter
  */
 export function meterWithConstant(study: Study, kvar: number): MeterAfter {
-  return meterAfter(study.record, study.load, new Float64Array(study.record.beginS.length).fill(kvar));
+  const connectedKvar = new Float64Array(study.record.beginS.length).fill(kvar);
+  return meterAfter(study.record, study.load, atVoltage(connectedKvar, study.voltageScale));
+}
+
+function atVoltage(connectedKvar: Float64Array, voltageScale: Float64Array | null): Float64Array {
+  return voltageScale === null ? connectedKvar : connectedKvar.map((kvar, i) => kvar * voltageScale[i]!);
 }

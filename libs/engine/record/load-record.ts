@@ -116,7 +116,7 @@ function timeProblems(parts: LoadRecordParts): Problem[] {
   for (let i = 0; i < beginS.length; i++) {
     const stepS = i === 0 ? intervalS : beginS[i]! - beginS[i - 1]!;
     const slot = (beginS[i]! - firstS) / intervalS;
-    if (!(stepS >= intervalS) || slot !== Math.round(slot)) {
+    if (!(stepS >= intervalS) || !Number.isSafeInteger(slot)) {
       return [
         {
           code: 'mixed-intervals',

@@ -1,5 +1,5 @@
 import { InputProblem } from '../problem.js';
-import type { Supply, Transformer } from './supply.js';
+import type { SettledTransformer, Supply } from './supply.js';
 
 /** Series resistance and reactance per phase at the fundamental, at the bus voltage [Ω]. */
 export interface SeriesOhm {
@@ -41,7 +41,7 @@ export function networkOhm(faultLevelMva: number, nominalV: number, rOverX: numb
  * @throws InputProblem where the load loss leaves no reactance
  * @source iec-60909-0 (two-winding transformers)
  */
-export function transformerOhm(transformer: Required<Transformer>, nominalV: number, end: ToleranceEnd): SeriesOhm {
+export function transformerOhm(transformer: SettledTransformer, nominalV: number, end: ToleranceEnd): SeriesOhm {
   const sign = end === 'least' ? -1 : end === 'most' ? 1 : 0;
   const impedancePu = (transformer.impedancePct / 100) * (1 + (sign * transformer.impedanceTolerancePct) / 100);
   const resistancePu = transformer.loadLossKw / transformer.ratedKva;

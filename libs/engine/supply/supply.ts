@@ -1,5 +1,7 @@
 /** A transformer as its nameplate and test sheet give it. */
 export interface Transformer {
+  /** bus it feeds, in a network of several */
+  bus?: string;
   /** [kVA] */
   ratedKva: number;
   /** short-circuit impedance u_k [%] of the rating */
@@ -13,6 +15,9 @@ export interface Transformer {
   /** magnetising current [%] of rated current */
   noLoadCurrentPct?: number;
 }
+
+/** A transformer with defaults filled in; where it stands is the network's matter. */
+export type SettledTransformer = Required<Omit<Transformer, 'bus'>>;
 
 /** Fault level at the transformer's primary, or at the bus where no transformer is given [MVA]. */
 export interface FaultLevel {
@@ -30,7 +35,16 @@ export interface SupplyInput {
   rippleHz?: number | null;
   arrangement?: 'parallel' | 'separate';
   transformers?: Transformer[];
+  /** how the system is earthed */
+  earthing?: Earthing;
+  /** photovoltaic plant behind the same meter [kW] */
+  photovoltaicKw?: number;
 }
+
+/** Kinds of system earthing. */
+export const EARTHINGS = ['TN-S', 'TN-C', 'TN-C-S', 'TT', 'IT'] as const;
+
+export type Earthing = (typeof EARTHINGS)[number];
 
 /** The supply with every default filled in. */
 export interface Supply {
@@ -38,5 +52,5 @@ export interface Supply {
   rOverX: number;
   resistanceExponent: number;
   rippleHz: number | null;
-  transformers: Required<Transformer>[];
+  transformers: SettledTransformer[];
 }

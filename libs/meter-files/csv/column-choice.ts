@@ -35,6 +35,7 @@ const NO_UNIT: ReadUnit = { family: 'active', energy: false, times: 1, over: 1, 
  */
 export function columnChoices(header: readonly HeaderColumn[], map: MeterMap, headerRow: number): ColumnChoice[] {
   const candidates = candidatesOf(header, map);
+  refuseForeignUnits(candidates, header, headerRow);
   refuseMissing(candidates, header, headerRow);
   const sets = combined(candidates);
   const open = sets.flatMap((set) => withUnits(set, map, sets.length > 1));
@@ -51,15 +52,23 @@ function candidatesOf(header: readonly HeaderColumn[], map: MeterMap): Candidate
     ...(said.reactive !== undefined ? (['lagging', 'leading'] as const) : []),
     ...(splitSaid ? (['reactive', 'lagging', 'leading'] as const) : []),
   ]);
-  const taken = new Set(Object.values(said).map((column) => columnNamed(header, column, 'columns')));
+  const taken = new Set(
+    Object.entries(said).map(([quantity, column]) => columnNamed(header, column, `columns.${quantity}`)),
+  );
   const candidates = {} as Candidates;
   for (const quantity of QUANTITIES) {
     const mapped = said[quantity as MeterColumn];
     if (mapped !== undefined) candidates[quantity] = [columnNamed(header, mapped, `columns.${quantity}`)];
     else if (silenced.has(quantity)) candidates[quantity] = [];
-    else candidates[quantity] = best(header.filter((column) => column.role === quantity && !taken.has(column)));
+    else
+      candidates[quantity] = best(header.filter((column) => isCandidate(column, quantity, map) && !taken.has(column)));
   }
   return candidates;
+}
+
+function isCandidate(column: HeaderColumn, quantity: Quantity, map: MeterMap): boolean {
+  const readable = !column.foreignUnit || map.units?.[quantity as keyof MeterMap['units']] !== undefined;
+  return column.role === quantity && readable;
 }
 
 /**
@@ -86,6 +95,24 @@ function best(columns: HeaderColumn[]): HeaderColumn[] {
     (column.phase ? 4 : 0) + (column.extreme ? 2 : 0) + (column.unit === null ? 1 : 0);
   const least = Math.min(...columns.map(rank));
   return columns.filter((column) => rank(column) === least);
+}
+
+/** A column that is needed is not passed over because its unit can't be read. */
+function refuseForeignUnits(candidates: Candidates, header: readonly HeaderColumn[], row: number): void {
+  const given = (quantity: Quantity) =>
+    candidates[quantity].length > 0 || (quantity === 'reactive' && candidates.lagging.length > 0);
+  const problems = header
+    .filter(
+      ({ role, foreignUnit }) => foreignUnit && QUANTITIES.some((quantity) => quantity === role && !given(quantity)),
+    )
+    .map(({ index, name }) => ({
+      code: 'wrong-unit' as const,
+      ...(row > 0 ? { row } : {}),
+      column: index + 1,
+      expected: 'a unit of power or energy, such as kW, kWh, kvar or kvarh',
+      found: shown(name),
+    }));
+  if (problems.length > 0) throw new InputProblem(problems);
 }
 
 function refuseMissing(candidates: Candidates, header: readonly HeaderColumn[], row: number): void {

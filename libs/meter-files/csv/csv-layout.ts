@@ -1,7 +1,9 @@
 import type { MeterMap } from '#libs/contract/meter-map.js';
 import { InputProblem } from '#libs/engine/index.js';
 import { type ColumnChoice, columnChoices, columnNamed } from './column-choice.js';
+import type { CsvView } from './csv-view.js';
 import { type HeaderColumn, readHeaderColumn } from './header-column.js';
+import { headerWindows } from './header-windows.js';
 import { readNumberText } from './number-cell.js';
 import { RowCells } from './row-cells.js';
 import { chooseTimeColumns, isDated, type TimeColumns, timeContent } from './time-columns.js';
@@ -33,49 +35,60 @@ interface Candidate {
   row: Row;
   lastHeaderRow: number;
   header: HeaderColumn[];
+  before: Row[];
   data: Row[];
   score: number;
 }
 
 const DELIMITERS = [';', '\t', '|', ','] as const;
-/** Rows of the buffer that are looked at for a header, at first and where that does not show one. */
-const LOOKS = [40, 400];
+/** Rows of a view that are looked at for a header before anything else is tried. */
+const LOOK_ROWS = 40;
 const SAMPLE_ROWS = 24;
+/** A row of more cells neither names columns nor belongs to a meter. */
+const MOST_COLUMNS = 1000;
 /** Added to the score of a header with a dated row behind it, and again where that row is as wide. */
 const FOLLOWED = 500;
 
+/** A layout and the view whose rows it counts from. */
+export interface FoundLayout {
+  layout: CsvLayout;
+  from: CsvView;
+}
+
 /**
- * Finds the header row and what its columns mean.
+ * Finds the header row and what its columns mean: near the beginning, where most files have it, else where dates begin.
  * @param view the bytes read so far, and the row of the file they begin with
  * @param map what a person says
  * @returns the layout, or null where there is no header among these rows
  * @throws InputProblem where a column that is needed is missing
  */
-export function findLayout(
-  view: { bytes: Uint8Array; start: number; end: number; rowEnd: number; rowsBefore: number },
-  map: MeterMap,
-): CsvLayout | null {
-  const separators = map.separator === undefined ? DELIMITERS : [map.separator];
-  // the header of most files stands near their beginning
-  for (const look of LOOKS) {
-    const candidates = separators.flatMap((separator) => candidatesAt(rowsOf(view, separator, look), separator, map));
-    const best = candidates.reduce<Candidate | null>((a, b) => (a === null || b.score > a.score ? b : a), null);
-    if (best !== null && (best.score >= FOLLOWED || look === LOOKS.at(-1))) return layoutOf(best, map);
+export function findLayout(view: CsvView, map: MeterMap): FoundLayout | null {
+  const near = bestCandidate(view, LOOK_ROWS, map);
+  if (near !== null && near.score >= FOLLOWED) return { layout: layoutOf(near, map), from: view };
+  for (const from of headerWindows(view)) {
+    const found = bestCandidate(from, Number.POSITIVE_INFINITY, map);
+    if (found !== null && found.score >= FOLLOWED) return { layout: layoutOf(found, map), from };
   }
-  return null;
+  return near !== null && isFinal(near, view) ? { layout: layoutOf(near, map), from: view } : null;
+}
+
+function bestCandidate(view: CsvView, most: number, map: MeterMap): Candidate | null {
+  const separators = map.separator === undefined ? DELIMITERS : [map.separator];
+  return separators
+    .flatMap((separator) => candidatesAt(rowsOf(view, separator, most), separator, map))
+    .reduce<Candidate | null>((a, b) => (a === null || b.score > a.score ? b : a), null);
+}
+
+/** A header whose data are not dated is taken where there is nothing more to read, or the data are as wide as it is. */
+function isFinal({ data, header }: Candidate, { ended }: CsvView): boolean {
+  return ended || data[0]?.cells.length === header.length;
 }
 
 /**
  * Whether the rows look like data without names.
  * @param view the bytes read so far
  */
-export function looksTabular(view: {
-  bytes: Uint8Array;
-  start: number;
-  end: number;
-  rowEnd: number;
-  rowsBefore: number;
-}) {
+export function looksTabular(view: CsvView): boolean {
   return DELIMITERS.some((separator) =>
     rowsOf(view, separator, SAMPLE_ROWS).some(
       ({ cells }) => cells.length > 1 && cells.some((cell) => isDated(cell) !== null) && cells.some(isNumber),
@@ -83,11 +96,7 @@ export function looksTabular(view: {
   );
 }
 
-function rowsOf(
-  view: { bytes: Uint8Array; start: number; end: number; rowEnd: number; rowsBefore: number },
-  separator: string,
-  most: number,
-): Row[] {
+function rowsOf(view: CsvView, separator: string, most: number): Row[] {
   const cells = new RowCells();
   const marks = { delimiter: separator.charCodeAt(0), rowEnd: view.rowEnd };
   const rows: Row[] = [];
@@ -95,7 +104,8 @@ function rowsOf(
   while (rows.length < most && at < view.end) {
     at = cells.split(view.bytes, at, view.end, marks);
     if (at < 0) break;
-    rows.push({ cells: cells.texts(), number: view.rowsBefore + rows.length + 1 });
+    const texts = cells.count > MOST_COLUMNS ? [] : cells.texts();
+    rows.push({ cells: texts, number: view.rowsBefore + rows.length + 1 });
   }
   return rows;
 }
@@ -124,6 +134,7 @@ function headless(rows: Row[], delimiter: number): Candidate[] {
       row: { cells: header.map(() => ''), number: 0 },
       lastHeaderRow: number,
       header,
+      before: [],
       data,
       score: row.cells.length,
     },
@@ -143,15 +154,24 @@ function candidateAt(rows: Row[], index: number, delimiter: number, map: MeterMa
   const hasUnits = under !== undefined && isUnitRow(under, row);
   const names = hasUnits ? row.cells.map((name, column) => withUnit(name, under.cells[column])) : row.cells;
   const header = names.map(readHeaderColumn);
-  const lastHeaderRow = row.number + (hasUnits ? 1 : 0);
-  const data = rows.slice(index + 1 + (hasUnits ? 1 : 0)).filter(({ cells }) => cells.some((cell) => cell !== ''));
   const roles = header.filter(({ role }) => role !== null);
   const said = map.headerRow !== undefined || map.columns !== undefined;
   if (!said && (roles.length < 2 || roles.every(({ role }) => role === 'time'))) return [];
+  const lastHeaderRow = row.number + (hasUnits ? 1 : 0);
+  const data = dataBehind(rows, index + (hasUnits ? 2 : 1));
   const followed = data[0]?.cells.some((cell) => timeContent([cell]) !== null && isDated(cell) !== null) === true;
-  const score =
-    roles.length + (followed ? FOLLOWED : 0) + (followed && data[0]!.cells.length === header.length ? FOLLOWED : 0);
-  return [{ delimiter, row, lastHeaderRow, header, data: data.slice(0, SAMPLE_ROWS), score }];
+  const asWide = followed && data[0]!.cells.length === header.length;
+  const score = roles.length + (followed ? FOLLOWED : 0) + (asWide ? FOLLOWED : 0);
+  return [{ delimiter, row, lastHeaderRow, header, before: rows.slice(0, index), data, score }];
+}
+
+/** The first rows from an index on that hold anything. */
+function dataBehind(rows: Row[], from: number): Row[] {
+  const data: Row[] = [];
+  for (let i = from; i < rows.length && data.length < SAMPLE_ROWS; i++) {
+    if (rows[i]!.cells.some((cell) => cell !== '')) data.push(rows[i]!);
+  }
+  return data;
 }
 
 /** A row of units under the names: nothing else in it but words without a number. */
@@ -185,8 +205,22 @@ function layoutOf(found: Candidate, map: MeterMap): CsvLayout {
     ]);
   }
   const choices = columnChoices(header, map, row.number);
+  refuseDataBefore(found, time, choices);
   const mark = map.stamp ?? time.mark;
   return { delimiter, names, headerRow: row.number, lastHeaderRow, time: { ...time, mark }, choices, header };
+}
+
+/** Rows of data above the header would be lost as if they were a preamble. */
+function refuseDataBefore({ before, header }: Candidate, time: TimeColumns, choices: ColumnChoice[]): void {
+  const [choice] = choices;
+  const isData = ({ cells }: Row) =>
+    cells.length === header.length &&
+    isDated(cells[time.stamp] ?? '') !== null &&
+    choice!.columns.every(({ column }) => isNumber(cells[column] ?? ''));
+  const data = before.find(isData);
+  if (data === undefined) return;
+  const expected = 'the names of the columns above the first row of data';
+  throw new InputProblem([{ code: 'unreadable', row: data.number, expected, found: 'data' }]);
 }
 
 function mappedTime(header: readonly HeaderColumn[], map: MeterMap): TimeColumns | null {

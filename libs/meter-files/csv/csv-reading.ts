@@ -42,11 +42,11 @@ export function readUnder(file: CsvFile, meaning: CsvMeaning): ReadResult {
   const rules = stampRules(file, meaning.order);
   const { moments, grid, ends, because, skipped } = placedRows(file, rules, { sources, keep: meaning.keep });
   const shiftS = ends ? grid.intervalS : 0;
-  const { utcS } = moments;
   const ordered = {
     intervalS: grid.intervalS,
     kept: grid.kept,
-    beginS: (row: number) => utcS[row]! - shiftS,
+    utcS: moments.utcS,
+    shiftS,
     rowNumber: reader.rows.rowNumber,
   };
   refuseRegisters(sources, grid.kept);
@@ -136,17 +136,27 @@ const REGISTER_ROWS = 200;
 /** Energies of intervals rise and fall; a column that only rises, in small steps, is the reading of a register. */
 function refuseRegisters(sources: readonly QuantitySource[], kept: Int32Array): void {
   for (const { values, energy, column } of sources) {
-    if (!energy) continue;
-    const known = Array.from(kept, (row) => values[row]!).filter((value) => !Number.isNaN(value));
-    const first = known[0] ?? 0;
-    const rise = (known[known.length - 1] ?? 0) - first;
-    if (known.length < REGISTER_ROWS || rise <= 0 || first * (known.length - 1) < 10 * rise) continue;
-    if (known.some((value, i) => i > 0 && value < known[i - 1]!)) continue;
+    if (!energy || !isRegister(values, kept)) continue;
     const expected = 'the energy of each interval';
     throw new InputProblem([
       { code: 'not-supported-yet', column, expected, found: 'the rising reading of a register' },
     ]);
   }
+}
+
+function isRegister(values: Float64Array, kept: Int32Array): boolean {
+  let first = Number.NaN;
+  let last = Number.NaN;
+  let count = 0;
+  for (let i = 0; i < kept.length; i++) {
+    const value = values[kept[i]!]!;
+    if (Number.isNaN(value)) continue;
+    if (value < last) return false;
+    if (count === 0) first = value;
+    last = value;
+    count++;
+  }
+  return count >= REGISTER_ROWS && last > first && first * (count - 1) >= 10 * (last - first);
 }
 
 function rowNotes(

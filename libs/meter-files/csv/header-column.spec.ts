@@ -93,6 +93,18 @@ describe('a column name', () => {
     ]).toEqual(['UTC', 'UTC', '+01:00', '-05:30', null]);
   });
 
+  it('knows a unit that it can’t read from a word of the trade', () => {
+    const isForeign = (name: string) => readHeaderColumn(name, 0).foreignUnit;
+    expect(['Active energy (MJ)', 'Active power [hp]', 'Leading reactive (kvrah)'].map(isForeign)).toEqual([
+      true,
+      true,
+      true,
+    ]);
+    expect(['Active energy (import)', 'kWh (total)', 'Active power', 'Time (UTC)'].map(isForeign)).toEqual(
+      Array(4).fill(false),
+    );
+  });
+
   it('remarks on reactive power in kilowatt, which can only be kvar', () => {
     expect(readHeaderColumn('reactive power in kilowatt', 0).reactiveInWatt).toBe(true);
   });

@@ -1,5 +1,5 @@
 import type { MeterColumn } from '#libs/contract/meter-map.js';
-import { says, wordsOf } from './header-words.js';
+import { areKnown, says, wordsOf } from './header-words.js';
 import { findUnit, type ReadUnit } from './unit-text.js';
 
 /** What a column name says. */
@@ -8,6 +8,8 @@ export interface HeaderColumn {
   index: number;
   name: string;
   unit: ReadUnit | null;
+  /** the name holds a unit, and it is none that is read */
+  foreignUnit: boolean;
   /** what the column holds, or null where the reader has no use for it */
   role: MeterColumn | null;
   /** which end of the interval a time column marks */
@@ -28,13 +30,19 @@ export interface HeaderColumn {
  * @param index its column, counted from 0
  */
 export function readHeaderColumn(name: string, index: number): HeaderColumn {
-  const { unit, rest } = findUnit(name);
-  const words = [...wordsOf(rest), ...signWords(rest)];
+  const found = findUnit(name);
+  const words = [...wordsOf(found.rest), ...signWords(found.rest)];
+  // “reactive energy (kv rh)” is no voltage
+  const misread = (found.unit?.family === 'voltage' || found.unit?.family === 'current') && says(words, 'reactive');
+  const unit = misread ? null : found.unit;
+  const { rest } = found;
   const role = roleOf(words, unit);
+  const measured = role !== null && role !== 'time' && role !== 'standby';
   return {
     index,
     name,
     unit,
+    foreignUnit: misread || (measured && unit === null && hasForeignUnit(name)),
     role,
     mark: role === 'time' ? markOf(words) : null,
     zone: role === 'time' ? zoneOf(name) : null,
@@ -42,6 +50,12 @@ export function readHeaderColumn(name: string, index: number): HeaderColumn {
     phase: says(words, 'phase') || /\b(?:phase|l)[ _-]?[123abc]\b/i.test(rest),
     reactiveInWatt: unit?.family === 'active' && isReactiveRole(role),
   };
+}
+
+/** A short bracket that holds none of the trade's words, such as [MJ] or (hp), is a unit that is not read. */
+function hasForeignUnit(name: string): boolean {
+  const brackets = [...name.matchAll(/[([{<]\s*([\p{L}%°µ/²³]{1,6})\s*[)\]}>]/gu)];
+  return brackets.some(([, content]) => !areKnown(wordsOf(content!)) || wordsOf(content!).length === 0);
 }
 
 function isReactiveRole(role: MeterColumn | null): boolean {
@@ -80,7 +94,8 @@ function roleOf(words: string[], unit: ReadUnit | null): MeterColumn | null {
 function roleWithoutUnit(words: string[]): MeterColumn | null {
   if (says(words, 'other')) return null;
   if (says(words, 'standby')) return 'standby';
-  if (says(words, 'reactive')) return isBank(words) ? 'connected' : reactiveRole(words);
+  if (says(words, 'reactive') || says(words, 'lagging') || says(words, 'leading'))
+    return isBank(words) ? 'connected' : reactiveRole(words);
   const quantity = says(words, 'active') && !says(words, 'apparent');
   if (says(words, 'time') && !quantity) return 'time';
   if (says(words, 'voltage')) return 'voltage';

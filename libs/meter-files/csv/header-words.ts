@@ -8,9 +8,9 @@ export const WORDS = {
     'usage consumption consumo consommation verbrauch* load last demand bezug* electricity stromverbrauch',
   lagging: 'lag lagging inductive inductiva inductivo inductif induktiv* ind',
   leading: 'lead leading capacitive capacitiva capacitivo capacitif kapazitiv* cap',
-  imported: 'import imported delivered bezug* soutirage soutiree consumida positive positiv positiva',
+  imported: 'import imported delivered del bezug* soutirage soutiree consumida positive positiv positiva',
   exported:
-    'export exported received einspeis* ruckspeis* lieferung abgabe generation generated injection injectee ' +
+    'export exported received rec einspeis* ruckspeis* lieferung abgabe generation generated injection injectee ' +
     'inyeccion inyectada vertida excedente feed exportada negative negativ negativa',
   bank: 'bank capacitor capacitors kondensator* kompensation* compensation pfc condensateur* condensador* bateria',
   connected: 'connected zugeschaltet* conectada connectee',
@@ -28,9 +28,12 @@ export const WORDS = {
   phase: 'l1 l2 l3 phase1 phase2 phase3',
   time:
     'date datum fecha time zeit* uhrzeit heure hora clock timestamp timestamps datetime stamp horodat* interval ' +
-    'period periode periodo begin beginning start end ending from to von bis ab beginn ende debut fin inicio desde hasta',
-  begin: 'begin begins beginning start starts starting from von ab beginn anfang debut desde inicio',
-  end: 'end ends ending ende to until till bis fin jusqu* hasta',
+    'period periode periodo begin beginning start end ending from to von bis ab beginn ende intervallbeginn intervallanfang intervallende debut fin inicio desde hasta',
+  neutral:
+    'total sum avg average mean net gross main site plant all mittel mittelwert moyenne media meter l ll ln kanal channel',
+  begin:
+    'begin begins beginning start starts starting from von ab beginn anfang intervallbeginn intervallanfang debut desde inicio',
+  end: 'end ends ending ende to until till bis intervallende fin jusqu* hasta',
 } as const;
 
 export type WordGroup = keyof typeof WORDS;
@@ -47,18 +50,33 @@ for (const [group, list] of Object.entries(WORDS) as [WordGroup, string][]) {
 }
 
 /**
- * The words of a column name: small letters, no accents, parts of camelCase apart.
+ * The words of a column name: small letters, no accents, parts of camelCase apart and together.
  * @param name the name, its unit taken out
  */
 export function wordsOf(name: string): string[] {
   const plain = name
-    .replace(/([a-z])([A-Z])/g, '$1 $2')
     .replace(/stand[- ]by/gi, 'standby')
     .normalize('NFD')
     .replace(/\p{M}/gu, '')
-    .replaceAll('ß', 'ss')
-    .toLowerCase();
-  return plain.split(/[^a-z0-9]+/).filter((word) => word !== '');
+    .replaceAll('ß', 'ss');
+  const apart = plain.replace(/([a-z])([A-Z])/g, '$1 $2');
+  return [...new Set([...splitWords(plain), ...splitWords(apart)])];
+}
+
+function splitWords(text: string): string[] {
+  return text
+    .toLowerCase()
+    .split(/[^a-z0-9]+/)
+    .filter((word) => word !== '');
+}
+
+/**
+ * Whether every word is one of the trade's.
+ * @param words of a part of a column name
+ */
+export function areKnown(words: readonly string[]): boolean {
+  const groups = Object.keys(WORDS) as WordGroup[];
+  return words.every((word) => /^\d+$/.test(word) || groups.some((group) => says([word], group)));
 }
 
 /**

@@ -112,13 +112,18 @@ export class QuickRows {
     const actions = this.#actions;
     const markByte = sign === null || sign.charCodeAt(0) === delimiter ? NO_BYTE : sign.charCodeAt(0);
     const limit = bytes.lastIndexOf(LF, buffer.end - 1) + 1;
+    let { dateKey: dateKeys, clockS: clocks, rowNumber: rowNumbers, offsetS: offsets, values } = rows;
+    let room = rowNumbers.length;
     let at = buffer.start;
     this.#dateAt = -1;
     while (at < limit) {
       const index = rows.count;
-      if (index === rows.rowNumber.length) rows.reserve(Math.min(2 * index, MAX_INTERVALS));
       if (index === MAX_INTERVALS) return;
-      const { values } = rows;
+      if (index === room) {
+        rows.grow();
+        ({ dateKey: dateKeys, clockS: clocks, rowNumber: rowNumbers, offsetS: offsets, values } = rows);
+        room = rowNumbers.length;
+      }
       let dateKey = -1;
       let clockS = 0;
       let endKey = -1;
@@ -172,10 +177,10 @@ export class QuickRows {
       if (bytes[to] === CR) to++;
       if (bytes[to] !== LF) break;
       if (endKey >= 0 && (endKey !== dateKey || endS - clockS !== rows.spanS)) break;
-      rows.dateKey[index] = dateKey;
-      rows.clockS[index] = clockS;
-      if (rows.offsetS !== null) rows.offsetS[index] = form.offsetS;
-      rows.rowNumber[index] = ++buffer.rowsBefore;
+      dateKeys[index] = dateKey;
+      clocks[index] = clockS;
+      if (offsets !== null) offsets[index] = form.offsetS;
+      rowNumbers[index] = ++buffer.rowsBefore;
       rows.count = index + 1;
       at = to + 1;
       buffer.start = at;

@@ -27,6 +27,7 @@ export async function readCsv(source: MeterBytes, options: ReadOptions, lane: La
   const layout = await layoutOf(buffer, options);
   const reader = new RowReader(layout, map);
   await readRows(buffer, layout, reader, lane);
+  reader.stamps.end();
   reader.problems.refuse();
   if (reader.rows.count === 0) {
     throw new InputProblem([{ code: 'empty-file', expected: 'rows of data under the header', found: 'none' }]);
@@ -38,9 +39,13 @@ export async function readCsv(source: MeterBytes, options: ReadOptions, lane: La
 async function layoutOf(buffer: RowBuffer, { map = {} }: ReadOptions): Promise<CsvLayout> {
   let tabular = false;
   for (;;) {
-    while (buffer.end - buffer.start < VIEW_BYTES && (await buffer.more()));
-    const layout = findLayout(buffer, map);
-    if (layout !== null) return layout;
+    while (isShort(buffer) && (await buffer.more())) buffer.refuseEndlessRow();
+    const found = findLayout(buffer, map);
+    if (found !== null) {
+      buffer.start = found.from.start;
+      buffer.rowsBefore = found.from.rowsBefore;
+      return found.layout;
+    }
     tabular ||= looksTabular(buffer);
     if (buffer.ended) break;
     dropRows(buffer);
@@ -54,15 +59,17 @@ async function layoutOf(buffer: RowBuffer, { map = {} }: ReadOptions): Promise<C
   throw new InputProblem([{ code: 'unknown-format', expected, found: 'a file without a row of column names' }]);
 }
 
+/** Too little to look for a header in, or not one whole row. */
+function isShort({ bytes, start, end, rowEnd }: RowBuffer): boolean {
+  return end - start < VIEW_BYTES || bytes.lastIndexOf(rowEnd, end - 1) < start;
+}
+
 /** Drops what has been looked at, but for the last rows: the header may be among them and its data behind them. */
 function dropRows(buffer: RowBuffer): void {
   const { bytes, rowEnd, end } = buffer;
   let keep = end;
   for (let rows = 0; rows < 4 && keep > buffer.start; rows++) keep = bytes.lastIndexOf(rowEnd, keep - 1);
-  if (keep <= buffer.start) {
-    buffer.refuseEndlessRow();
-    return;
-  }
+  if (keep <= buffer.start) return;
   for (let at = buffer.start; at <= keep; at++) if (bytes[at] === rowEnd) buffer.rowsBefore++;
   buffer.start = keep + 1;
 }

@@ -33,19 +33,21 @@ export class RowReader {
   readonly columns: readonly number[];
   readonly #layout: CsvLayout;
   readonly #standby: ReadonlySet<number>;
-  /** where the columns' meaning is still open, a text in one of them may be no fault */
-  readonly #lenient: boolean;
+  /** columns that only some readings use: a text in one of them may be no fault */
+  readonly #lenient: ReadonlySet<number>;
   readonly #cell: NumberCell = { form: 'missing', value: 0 };
 
   constructor(layout: CsvLayout, map: MeterMap) {
     const used = layout.choices.flatMap(({ columns }) => columns);
-    this.columns = [...new Set(used.map(({ column }) => column))];
+    this.columns = [...new Set(used.map(({ column }) => column))].sort((a, b) => a - b);
     this.rows = new StampedRows(this.columns.length);
     this.mark = new DecimalMark(map.decimal, layout.delimiter);
     this.stamps = new RowStamps(this.rows, layout.time, this.problems);
     this.#layout = layout;
     this.#standby = new Set(used.filter(({ quantity }) => quantity === 'standby').map(({ column }) => column));
-    this.#lenient = layout.choices.length > 1;
+    const inAll = (column: number) =>
+      layout.choices.every(({ columns }) => columns.some((other) => other.column === column));
+    this.#lenient = new Set(this.columns.filter((column) => !inAll(column)));
   }
 
   /** What the quick lane may do for this file, or null where a state or a clock column of its own needs the general one. */
@@ -128,7 +130,7 @@ export class RowReader {
 
   #refuse(cells: RowCells, column: number, row: number, expected: string): number {
     const found = shown(cells.text(column));
-    if (!this.#lenient) this.problems.add({ code: 'bad-number', row, column: column + 1, expected, found });
+    if (!this.#lenient.has(column)) this.problems.add({ code: 'bad-number', row, column: column + 1, expected, found });
     return Number.NaN;
   }
 }

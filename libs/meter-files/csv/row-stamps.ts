@@ -16,6 +16,8 @@ export class RowStamps {
   readonly #time: TimeColumns;
   readonly #problems: RowProblems;
   readonly #offsets = new Set<number>();
+  #dates = 0;
+  #firstDateRow = 0;
 
   constructor(rows: StampedRows, time: TimeColumns, problems: RowProblems) {
     this.rows = rows;
@@ -26,14 +28,13 @@ export class RowStamps {
   /**
    * The stamp of a row.
    * @param cells the row
-   * @returns the stamp with date and clock time, or null where there is none
+   * @returns the stamp, its clock time null where the cell is a date alone; null where there is none
    */
   read(cells: RowCells): Stamp | null {
     const { stamp: column, clock } = this.#time;
     const stamp = readStamp(cells.text(column));
     if (clock < 0) {
-      if (stamp === null || stamp.dateKey === null) return null;
-      return stamp.clockS === null ? { ...stamp, clockS: 0 } : stamp;
+      return stamp === null || stamp.dateKey === null ? null : stamp;
     }
     const beside = readStamp(cells.text(clock));
     if (stamp === null || stamp.dateKey === null || beside === null || beside.clockS === null) return null;
@@ -49,13 +50,24 @@ export class RowStamps {
   keep(index: number, stamp: Stamp, cells: RowCells): void {
     const { rows } = this;
     const row = rows.rowNumber[index]!;
+    if (stamp.clockS === null && this.#dates++ === 0) this.#firstDateRow = row;
     rows.dateForm ??= stamp.dateForm;
     if (stamp.dateForm !== rows.dateForm) this.#refuse(row, 'a date written as in the rows before', cells);
     rows.dateKey[index] = stamp.dateKey!;
-    rows.clockS[index] = stamp.clockS!;
+    rows.clockS[index] = stamp.clockS ?? 0;
     this.#keepOffset(index, stamp.offsetS, cells);
     const spanS = this.#spanOf(stamp, cells);
     if (spanS !== null) this.#keepSpan(row, spanS, stamp.offsetS !== null);
+  }
+
+  /** A date alone is midnight in files that drop the clock time there; beside midnights written out it is a broken stamp. */
+  end(): void {
+    if (this.#dates === 0) return;
+    const midnights = this.rows.clockS.subarray(0, this.rows.count).filter((clockS) => clockS === 0).length;
+    if (midnights === this.#dates) return;
+    const expected = 'a date and a time, as in other rows of midnight';
+    const place = { row: this.#firstDateRow, column: this.#time.stamp + 1 };
+    this.#problems.add({ code: 'bad-time', ...place, expected, found: 'a date alone' });
   }
 
   #refuse(row: number, expected: string, cells: RowCells): void {
@@ -93,12 +105,12 @@ export class RowStamps {
 
   /** From begin to end as far as the row states both [s]. */
   #spanOf(stamp: Stamp, cells: RowCells): number | null {
-    if (stamp.untilS !== null) return modulo(stamp.untilS - stamp.clockS!, DAY_S) || DAY_S;
+    if (stamp.untilS !== null) return modulo(stamp.untilS - (stamp.clockS ?? 0), DAY_S) || DAY_S;
     const { end } = this.#time;
     if (end < 0) return null;
     const until = readStamp(cells.text(end));
     if (until === null || (until.clockS === null && until.dateKey === null)) return null;
-    const clockS = (until.clockS ?? 0) - stamp.clockS! - ((until.offsetS ?? 0) - (stamp.offsetS ?? 0));
+    const clockS = (until.clockS ?? 0) - (stamp.clockS ?? 0) - ((until.offsetS ?? 0) - (stamp.offsetS ?? 0));
     if (until.dateKey !== null && until.dateForm === 'yearFirst' && stamp.dateForm === 'yearFirst') {
       return (dayOf(until) - dayOf(stamp)) * DAY_S + clockS;
     }

@@ -39,13 +39,18 @@ export function settleMeaning(file: CsvFile): ReadResult {
     return settledAmong(file, points);
   } catch (problem) {
     if (!(problem instanceof ConflictingRows)) throw problem;
-    try {
-      return settledAmong(file, { ...points, keep: ['first', 'last'] });
-    } catch (question) {
-      if (question instanceof Question) throw new Question(question.questions, { row: problem.row });
-      throw problem;
-    }
+    return askWhichCounts(file, points, problem);
   }
+}
+
+/** Rows that disagree are asked about, with the row that raises it, or refused where either answer gives one record. */
+function askWhichCounts(file: CsvFile, points: OpenPoints, problem: ConflictingRows): never {
+  try {
+    settledAmong(file, { ...points, keep: ['first', 'last'] });
+  } catch (question) {
+    if (question instanceof Question) throw new Question(question.questions, { row: problem.row });
+  }
+  throw problem;
 }
 
 function openPoints({ layout, reader, map }: CsvFile): OpenPoints {

@@ -70,7 +70,7 @@ export function findUnit(name: string): { unit: ReadUnit | null; rest: string } 
     const unit = readUnit(content ?? '');
     if (unit !== null) return { unit, rest: name.replace(whole, ' ') };
   }
-  const pieces = name.split(/[\s_,;:|()[\]{}<>]+/).filter((piece) => piece !== '');
+  const pieces = name.split(/[^\p{L}\p{N}.·⋅*/%°-]+/u).filter((piece) => piece !== '');
   const spots = [3, 2, 1].flatMap((size) =>
     Array.from({ length: Math.max(0, pieces.length - size + 1) }, (_, back) => ({
       at: pieces.length - size - back,
@@ -91,9 +91,13 @@ function singleLetter(name: string): { unit: ReadUnit | null; rest: string } | n
   return letter === undefined ? null : { unit: readUnit(letter), rest: name.trim().slice(0, -1) };
 }
 
+/** Behind a word of some length; with a prefix, or behind a letter that can't be one. */
+const PREFIXED_TAIL = /\p{L}{2}[\p{Ll}\d]([kKMG](?:[Ww]h?|[Vv][Aa][Rr]h?))$/u;
+const BARE_TAIL = /\p{L}{2}[abcdefhijlopqrsvwxyz\d](Wh?|Varh?|V)$/u;
+
 /** Names such as activePowerKw. */
 function tailUnit(name: string): { unit: ReadUnit | null; rest: string } {
-  const tail = /[a-z0-9]([KMG](?:[Ww]h?|[Vv]arh?)|Wh?|Varh?|V)$/.exec(name);
+  const tail = PREFIXED_TAIL.exec(name) ?? BARE_TAIL.exec(name);
   const unit = tail === null ? null : readUnit(tail[1]!);
   return unit === null ? { unit, rest: name } : { unit, rest: name.slice(0, -tail![1]!.length) };
 }

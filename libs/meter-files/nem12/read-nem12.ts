@@ -74,6 +74,10 @@ class Nem12Reader {
 
   take(cells: RowCells, row: number): void {
     const kind = cells.text(0);
+    if (cells.badQuote > 0) {
+      const expected = 'the end of the cell behind its closing quotation mark';
+      this.problems.add({ code: 'unreadable', row, column: cells.badQuote, expected, found: 'more text' });
+    }
     if (kind !== '400' && kind !== '500') this.#closeDay();
     switch (kind) {
       case '100':

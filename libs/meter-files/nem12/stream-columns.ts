@@ -41,7 +41,10 @@ export function streamColumns(
   const rows = {
     intervalS: minutes * 60,
     kept: Int32Array.from({ length: slots }, (_, slot) => slot),
-    beginS: (slot: number) => days[Math.floor(slot / count)]! * DAY_S - OFFSET_S + (slot % count) * minutes * 60,
+    utcS: Float64Array.from({ length: slots }, (_, slot) => {
+      return days[Math.floor(slot / count)]! * DAY_S - OFFSET_S + (slot % count) * minutes * 60;
+    }),
+    shiftS: 0,
     rowNumber: Int32Array.from({ length: slots }, (_, slot) => (slot % count === 0 ? firstRow(slot) : 0)),
   };
   const built = buildColumns(rows, sources);

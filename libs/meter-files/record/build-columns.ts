@@ -44,8 +44,9 @@ export interface OrderedRows {
   intervalS: number;
   /** rows of the file in time order */
   kept: Int32Array;
-  /** beginning of the interval of each row of the file, UTC [s] */
-  beginS: (row: number) => number;
+  /** moment of each row of the file, UTC [s], and how far the beginning of its interval lies before it [s] */
+  utcS: Float64Array;
+  shiftS: number;
   rowNumber: Int32Array;
 }
 
@@ -77,7 +78,7 @@ export function buildColumns(
   const valid = validRows(rows.kept, sources);
   const n = valid.length;
   const beginS = new Float64Array(n);
-  for (let i = 0; i < n; i++) beginS[i] = rows.beginS(valid[i]!);
+  for (let i = 0; i < n; i++) beginS[i] = rows.utcS[valid[i]!]! - rows.shiftS;
   const of = (quantity: Quantity) =>
     taken(
       rows,
@@ -107,6 +108,7 @@ export function buildColumns(
 }
 
 function validRows(kept: Int32Array, sources: readonly QuantitySource[]): Int32Array {
+  if (!sources.some(({ values }) => hasGap(kept, values))) return kept;
   const valid = new Int32Array(kept.length);
   let count = 0;
   for (let i = 0; i < kept.length; i++) {
@@ -118,16 +120,20 @@ function validRows(kept: Int32Array, sources: readonly QuantitySource[]): Int32A
   return valid.subarray(0, count);
 }
 
+function hasGap(kept: Int32Array, values: Float64Array): boolean {
+  for (let i = 0; i < kept.length; i++) if (Number.isNaN(values[kept[i]!]!)) return true;
+  return false;
+}
+
 function taken(rows: OrderedRows, valid: Int32Array, source: QuantitySource | undefined): Float64Array | null {
   if (source === undefined) return null;
   const { values, times, over, energy } = source;
   const { intervalS } = rows;
   const column = new Float64Array(valid.length);
-  for (let i = 0; i < valid.length; i++) {
-    const value = (values[valid[i]!]! * times) / over;
-    // kW = kWh · 3600 ÷ intervalS
-    column[i] = energy ? (value * 3600) / intervalS : value;
-  }
+  for (let i = 0; i < valid.length; i++) column[i] = values[valid[i]!]!;
+  if (times !== 1 || over !== 1) for (let i = 0; i < column.length; i++) column[i] = (column[i]! * times) / over;
+  // kW = kWh · 3600 ÷ intervalS
+  if (energy) for (let i = 0; i < column.length; i++) column[i] = (column[i]! * 3600) / intervalS;
   return column;
 }
 

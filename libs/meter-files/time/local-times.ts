@@ -37,26 +37,47 @@ export function localToUtc(clock: Float64Array, newestFirst: boolean, table: Zon
   const changes = changesOf(table);
   const result: UtcTimes = { utcS: new Float64Array(clock.length), doubledRows: 0, onceRows: 0 };
   const n = clock.length;
-  let k = 0;
+  let clear = clearTimes(changes, table, Number.NEGATIVE_INFINITY);
   for (let i = 0; i < n; i++) {
     const row = newestFirst ? n - 1 - i : i;
     const localS = clock[row]!;
-    k = changeAhead(changes, k, localS);
-    const plainS = localS - (k > 0 ? changes[k - 1]!.afterS : table.offsetS[0]!);
-    const near = k < changes.length && localS >= changes[k]!.lowS ? changes[k] : changes[k - 1];
-    const isPlain = near === undefined || localS > near.highS;
-    result.utcS[row] = isPlain ? plainS : nearChange(near, row, { localS, plainS, ends });
+    if (!(localS > clear.fromS && localS < clear.toS)) clear = clearTimes(changes, table, localS);
+    const plainS = localS - clear.offsetS;
+    const near = changeAt(clear, localS);
+    result.utcS[row] = near === undefined ? plainS : nearChange(near, row, { localS, plainS, ends });
   }
   for (const change of changes) if (change.rows.length > 0) tellApart(change, clock, result);
   return result;
 }
 
-/** Index of the first change that the clock time does not lie wholly behind, looked for from a near one. */
-function changeAhead(changes: readonly Change[], near: number, localS: number): number {
-  let k = near;
-  while (k > 0 && localS < changes[k - 1]!.highS) k--;
-  while (k < changes.length && localS >= changes[k]!.highS) k++;
-  return k;
+/** Clock times between two changes, clear of both: they need no thought. */
+interface ClearTimes {
+  fromS: number;
+  toS: number;
+  offsetS: number;
+  behind: Change | undefined;
+  ahead: Change | undefined;
+}
+
+/** The change that a clock time beside the clear ones belongs to. */
+function changeAt(clear: ClearTimes, localS: number): Change | undefined {
+  if (localS >= clear.toS) return clear.ahead;
+  return localS <= clear.fromS ? clear.behind : undefined;
+}
+
+/** The clear times behind the last change that a clock time lies wholly behind. */
+function clearTimes(changes: readonly Change[], table: ZoneTable, localS: number): ClearTimes {
+  const next = changes.findIndex(({ highS }) => localS < highS);
+  const k = next < 0 ? changes.length : next;
+  const behind = changes[k - 1];
+  const ahead = changes[k];
+  return {
+    fromS: behind?.highS ?? Number.NEGATIVE_INFINITY,
+    toS: ahead?.lowS ?? Number.POSITIVE_INFINITY,
+    offsetS: behind?.afterS ?? table.offsetS[0]!,
+    behind,
+    ahead,
+  };
 }
 
 function changesOf(table: ZoneTable): Change[] {

@@ -3,6 +3,8 @@ import { MAX_INTERVALS } from '../meter-format.js';
 import type { DateForm } from './stamp-text.js';
 
 const FIRST_ROWS = 4096;
+/** Up to here room is made generously: most records are a year of quarter hours. */
+const FEW_ROWS = 262_144;
 
 /**
  * The rows of a file as read, in file order: stamps in parts, because the order of day and month is known only at the
@@ -36,16 +38,17 @@ export class StampedRows {
    */
   add(rowNumber: number): number {
     const index = this.count;
-    if (index === this.rowNumber.length) this.reserve(2 * index);
     if (index >= MAX_INTERVALS) refuseTooLong(rowNumber);
+    if (index === this.rowNumber.length) this.grow();
     this.rowNumber[index] = rowNumber;
     this.count++;
     return index;
   }
 
-  /** Makes room for so many rows in all. */
-  reserve(rows: number): void {
-    if (rows <= this.rowNumber.length) return;
+  /** Makes room for more rows. */
+  grow(): void {
+    const have = this.rowNumber.length;
+    const rows = Math.min(have < FEW_ROWS ? 4 * have : 2 * have, MAX_INTERVALS);
     this.dateKey = larger(this.dateKey, new Int32Array(rows));
     this.clockS = larger(this.clockS, new Int32Array(rows));
     this.rowNumber = larger(this.rowNumber, new Int32Array(rows));

@@ -1,9 +1,11 @@
+// long: one entry a sample, most of it tables
 // Samples of the project's own invention, one for each way in which meter files mislead; every number is worked out by hand
 // from the file beside it.
-import { readFileSync } from 'node:fs';
+import { readdirSync, readFileSync } from 'node:fs';
 import { fileURLToPath } from 'node:url';
 import { describe, expect, it } from 'vitest';
 import type { ReadOptions } from '#libs/meter-files/meter-format.js';
+import { NOTE_CODES } from '#libs/meter-files/note-codes.js';
 import { noteCodes, questionOf, readMeterText, refusalOf } from '../../support/meter-text.js';
 
 const sample = (name: string) => readFileSync(fileURLToPath(new URL(`${name}.csv`, import.meta.url)));
@@ -315,6 +317,29 @@ describe('stamps', () => {
       },
     ],
     [
+      'autumn-hour-once',
+      'an hour that happened twice and stands once is the first of the two; the other is missing',
+      {
+        begin: '2024-10-26T23:30',
+        intervalS: 1800,
+        kw: [1, 2, 3, 4, 5],
+        lagging: Array(5).fill(1),
+        missing: 2,
+        notes: ['doubled-hour-once'],
+      },
+    ],
+    [
+      'small-mega-in-utc',
+      'the header’s zone wins over the site’s, and mwh is taken for megawatt hours, aloud',
+      {
+        begin: '2024-05-06T00:00',
+        intervalS: 900,
+        kw: [40, 50],
+        lagging: [20, 24],
+        notes: ['zone-from-header', 'unit-read-as-mega'],
+      },
+    ],
+    [
       'own-offsets-any-order',
       'stamps with their offset may stand in any order',
       { begin: '2024-10-26T23:30', intervalS: 1800, kw: [1, 2, 3, 4, 5], lagging: Array(5).fill(1) },
@@ -527,6 +552,15 @@ describe('NEM12', () => {
     await expectRecord(name, { siteTimeZone: 'Europe/Berlin', timeZone: 'America/Chicago' }, expected);
   });
 
+  it('nem12-quality-unstated: values whose quality is stated nowhere are kept and counted', async () => {
+    const { record } = await readMeterText(sample('nem12-quality-unstated'));
+    // the flag says that 400 records follow, and they leave the last eight out; the reactive day has no flag
+    expect(record.notes).toContainEqual(
+      expect.objectContaining({ code: 'nem12-quality-unstated', values: { values: 56 } }),
+    );
+    expect(record.beginS).toHaveLength(48);
+  });
+
   it('nem12-mega-15-min: MWh and varh become kW and kvar', async () => {
     const { record } = await readMeterText(sample('nem12-mega-15-min'));
     expect(record.intervalS).toBe(900);
@@ -537,3 +571,24 @@ describe('NEM12', () => {
     expect(new Set(record.laggingKvar)).toEqual(new Set([20]));
   });
 });
+
+describe('the notes of the table', () => {
+  it('are each raised by a sample, so that none is a note no file can have', async () => {
+    const names = readdirSync(fileURLToPath(new URL('.', import.meta.url))).filter((name) => name.endsWith('.csv'));
+    const utf16 = Buffer.from(sample('comma-iso-power').toString(), 'utf16le');
+    const options = [
+      {},
+      { siteTimeZone: 'Europe/Berlin' },
+      { map: { keepRow: 'last', repair: 'hold', upToS: 1800 } },
+    ] as const;
+    const files = [...names.map((name) => sample(name.slice(0, -4))), utf16];
+    const codes = await Promise.all(files.flatMap((file) => options.map((option) => raisedCodes(file, option))));
+    expect([...new Set(codes.flat())].sort()).toEqual(Object.keys(NOTE_CODES).sort());
+  });
+});
+
+// A file that is refused or asked about raises none.
+async function raisedCodes(...[file, options]: Parameters<typeof readMeterText>): Promise<string[]> {
+  const reading = await readMeterText(file, options).catch(() => null);
+  return reading === null ? [] : noteCodes(reading);
+}

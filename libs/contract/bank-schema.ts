@@ -1,0 +1,54 @@
+import * as z from 'zod';
+import { CAPACITOR_V, label, listOf, POSITIVE, plain, quantity, reactorPct, whole } from './schema-parts.js';
+
+/** A tuned order: below about 1.1 the reactor would leave no capacitor, above 50 there is none to speak of. */
+const TUNED_ORDER = { min: 1.07, max: 50 };
+
+/** A group of equal stages; the reactor is given by its ratio, by what it is tuned to, or by its inductance. */
+export const stageGroupSchema = z.strictObject({
+  count: whole(1, 100),
+  ratedKvar: quantity('ratedKvar', POSITIVE),
+  ratedV: quantity('ratedV', CAPACITOR_V),
+  reactorPct: reactorPct().optional(),
+  tunedHz: quantity('tunedHz', POSITIVE).optional(),
+  tunedOrderH: plain(TUNED_ORDER).optional(),
+  reactorQuality: plain(POSITIVE).optional(),
+  dischargeOhm: quantity('dischargeOhm', POSITIVE).optional(),
+  reactorMaxA: quantity('reactorMaxA', POSITIVE).optional(),
+  reactorLinearA: quantity('reactorLinearA', POSITIVE).optional(),
+  switchPeakA: quantity('switchPeakA', POSITIVE).optional(),
+  switchKvar: quantity('switchKvar', POSITIVE).optional(),
+  fuseA: quantity('fuseA', POSITIVE).optional(),
+  fixed: z.boolean().optional(),
+  capacitanceUf: quantity('capacitanceUf', POSITIVE).optional(),
+  measuredUf: quantity('measuredUf', POSITIVE).optional(),
+  reactorMh: quantity('reactorMh', POSITIVE).optional(),
+});
+
+/** The bank of a site, with what is fitted around it. */
+export const bankSchema = z.strictObject({
+  stages: listOf(stageGroupSchema, 1, 24),
+  interStageUh: quantity('interStageUh', POSITIVE).optional(),
+  ambientCategory: z.enum(['A', 'B', 'C', 'D']).optional(),
+  switchKind: label().optional(),
+  connection: z.enum(['delta', 'star', 'earthedStar']).optional(),
+  installed: z.boolean().optional(),
+  conductorA: quantity('conductorA', POSITIVE).optional(),
+  mainDevice: z
+    .strictObject({
+      ratedA: quantity('ratedA', POSITIVE).optional(),
+      settingA: quantity('settingA', POSITIVE).optional(),
+      instantaneousA: quantity('instantaneousA', POSITIVE).optional(),
+      breakingKa: quantity('breakingKa', POSITIVE).optional(),
+      withstandKa: quantity('withstandKa', POSITIVE).optional(),
+    })
+    .optional(),
+  protection: z
+    .strictObject({
+      earthFault: z.boolean().optional(),
+      overTemperature: z.boolean().optional(),
+      overPressure: z.boolean().optional(),
+      undervoltage: z.boolean().optional(),
+    })
+    .optional(),
+});

@@ -1,0 +1,130 @@
+import {
+  awgAreaMm2,
+  CABLE_REACTANCE_OHM_PER_KM,
+  type CableInput,
+  conductorOhmPerKm,
+  faultLevelOfKa,
+  faultLevelOfOhm,
+  type NetworkInput,
+  reactorPctOfTuned,
+  type Site,
+  type StageGroupInput,
+  type SupplyInput,
+  type Understood,
+} from '#libs/engine/index.js';
+import type { SiteGiven } from './site-schema.js';
+
+type GivenStage = NonNullable<SiteGiven['bank']>['stages'][number];
+type GivenNetwork = NonNullable<SiteGiven['network']>;
+
+/**
+ * A site with every quantity in the one form the engine computes with; what stood in another form is listed.
+ * @param given as the schema reads it
+ * @param json what was read, for the units a person wrote
+ * @returns the site, `understood` absent where nothing was converted
+ */
+export function understandSite(given: SiteGiven, json: unknown): Site {
+  const said = new Said(given.frequencyHz);
+  const { bank, network, supply, ...rest } = given;
+  const site: Site = { ...rest, supply: said.supply(supply) };
+  if (bank !== undefined) {
+    site.bank = { ...bank, stages: bank.stages.map((stage, g) => said.stage(stage, `bank.stages[${g}]`)) };
+  }
+  if (network !== undefined) site.network = said.network(network, json);
+  if (said.list.length > 0) site.understood = said.list;
+  return site;
+}
+
+class Said {
+  readonly list: Understood[] = [];
+  readonly #frequencyHz: number;
+
+  constructor(frequencyHz: number) {
+    this.#frequencyHz = frequencyHz;
+  }
+
+  #say(path: string, given: string, value: number, unit: string): number {
+    this.list.push({ path, given, value, unit });
+    return value;
+  }
+
+  supply(given: SiteGiven['supply']): SupplyInput {
+    const { faultLevelMva, faultLevel, xOverR, ...rest } = given;
+    const supply = { ...rest, faultLevelMva: faultLevelMva ?? this.#faultLevel(faultLevel!) };
+    if (xOverR !== undefined) supply.rOverX = this.#say('supply.xOverR', `X/R of ${xOverR}`, 1 / xOverR, '');
+    return supply;
+  }
+
+  #faultLevel(given: NonNullable<SiteGiven['supply']['faultLevel']>): SupplyInput['faultLevelMva'] {
+    const { maxMva, minMva, maxKa, minKa, minOhm, maxOhm, atKv = 0 } = given;
+    const ends = [
+      { key: 'max', mva: maxMva, ka: maxKa, ohm: minOhm },
+      { key: 'min', mva: minMva, ka: minKa, ohm: maxOhm },
+    ] as const;
+    const [max, min] = ends.map(({ key, mva, ka, ohm }) => {
+      const path = `supply.faultLevel`;
+      const end = key === 'max' ? 'greatest' : 'least';
+      if (mva !== undefined) return mva;
+      if (ka !== undefined)
+        return this.#say(path, `${ka} kA at ${atKv} kV, the ${end}`, faultLevelOfKa(ka, atKv), 'MVA');
+      if (ohm === undefined) return undefined;
+      return this.#say(path, `${ohm} Ω at ${atKv} kV, the ${end}`, faultLevelOfOhm(ohm, atKv), 'MVA');
+    });
+    return min === undefined ? { max: max! } : { max: max!, min };
+  }
+
+  stage<T extends GivenStage>(given: T, path: string): Omit<T, 'tunedHz' | 'tunedOrderH'> & StageGroupInput {
+    const { tunedHz, tunedOrderH, ...stage } = given;
+    if (tunedHz !== undefined) {
+      const pct = reactorPctOfTuned(tunedHz / this.#frequencyHz);
+      return { ...stage, reactorPct: this.#say(`${path}.tunedHz`, `tuned to ${tunedHz} Hz`, pct, '%') };
+    }
+    if (tunedOrderH !== undefined) {
+      const pct = reactorPctOfTuned(tunedOrderH);
+      return { ...stage, reactorPct: this.#say(`${path}.tunedOrderH`, `tuned to order ${tunedOrderH}`, pct, '%') };
+    }
+    return stage;
+  }
+
+  network(given: GivenNetwork, json: unknown): NetworkInput {
+    const { cables, capacitors, ...rest } = given;
+    for (const list of ['motors', 'resistive'] as const) {
+      for (const [i, { kw }] of (given[list] ?? []).entries()) this.#horsepower(json, [list, i], kw);
+    }
+    return {
+      ...rest,
+      ...(cables === undefined ? {} : { cables: cables.map((cable, i) => this.#cable(cable, `network.cables[${i}]`)) }),
+      ...(capacitors === undefined
+        ? {}
+        : { capacitors: capacitors.map((stage, i) => this.stage(stage, `network.capacitors[${i}]`)) }),
+    };
+  }
+
+  #horsepower(json: unknown, [list, index]: ['motors' | 'resistive', number], kw: number): void {
+    const entry = (json as { network: Record<string, { kw: unknown }[]> }).network[list]?.[index]?.kw;
+    if (typeof entry === 'string' && /hp\s*$/.test(entry))
+      this.#say(`network.${list}[${index}].kw`, entry.trim(), kw, 'kW');
+  }
+
+  #cable(given: NonNullable<GivenNetwork['cables']>[number], path: string): CableInput {
+    const { crossSectionMm2, sizeAwg, metal = 'copper', resistanceOhmPerKm, reactanceOhmPerKm, ...cable } = given;
+    return {
+      ...cable,
+      resistanceOhmPerKm: resistanceOhmPerKm ?? this.#resistance({ crossSectionMm2, sizeAwg, metal }, path),
+      reactanceOhmPerKm:
+        reactanceOhmPerKm ??
+        this.#say(`${path}.reactanceOhmPerKm`, 'a cable of the usual make', CABLE_REACTANCE_OHM_PER_KM, 'Ω/km'),
+    };
+  }
+
+  #resistance(
+    given: { crossSectionMm2?: number | undefined; sizeAwg?: string | undefined; metal: 'copper' | 'aluminium' },
+    path: string,
+  ): number {
+    const { crossSectionMm2, sizeAwg, metal } = given;
+    const areaMm2 = crossSectionMm2 ?? awgAreaMm2(sizeAwg!);
+    const size = crossSectionMm2 === undefined ? `${sizeAwg} AWG` : `${crossSectionMm2} mm²`;
+    const key = crossSectionMm2 === undefined ? 'sizeAwg' : 'crossSectionMm2';
+    return this.#say(`${path}.${key}`, `${size} ${metal} at 20 °C`, conductorOhmPerKm(areaMm2, metal), 'Ω/km');
+  }
+}

@@ -1,0 +1,164 @@
+import type { Bank, BankInput, StageGroup } from '../layout/bank.js';
+import { bankLevels } from '../layout/levels.js';
+import { deltaCapacitanceUf, tunedOrderH } from '../layout/stage.js';
+import type { NetworkModel } from '../network/network-model.js';
+import { InputProblem } from '../problem.js';
+import { type JudgeBasis, judgeBank } from './judge-bank.js';
+import { quickJudge } from './quick-judge.js';
+import { graver, type Verdict } from './rules.js';
+
+/** A bank with capacitors that have lost some of their capacitance, judged beside the corners. */
+export interface AgedCase {
+  /** entry of `bank.stages` of which one stage has aged; null where all stages have alike */
+  group: number | null;
+  /** capacitance left, as a share of the nameplate's */
+  capacitanceFactor: number;
+  /** how the share was come by: end of life of a new or an installed capacitor, or as measured */
+  from: 'new' | 'installed' | 'measured';
+  capacitanceUf: number | null;
+  /** ratio and tuned order with what is left; null where groups differ */
+  reactorPct: number | null;
+  tunedOrderH: number | null;
+  /** null where there are too many combinations to judge */
+  verdict: Verdict | null;
+}
+
+/** The capacitance at which a stage must come out. */
+export interface StageEnd {
+  group: number;
+  /** one delta phase [µF]; null where the verdict stands down to half of the nameplate's, or is the gravest already */
+  comesOutUf: number | null;
+  comesOutPct: number | null;
+}
+
+/** Ageing of a bank. */
+export interface Ageing {
+  cases: AgedCase[];
+  stages: StageEnd[];
+}
+
+/** End of life as a share of the nameplate's capacitance; common practice. */
+const END_OF_LIFE = { new: 0.9, installed: 0.8 } as const;
+/** No capacitor is left in to lose more than this. */
+const LEAST_FACTOR = 0.5;
+/** The verdict is looked at in steps of this before the first change of it is narrowed down. */
+const FACTOR_STEP = 0.02;
+/** Width at which the search ends [share]. */
+const FACTOR_WIDTH = 1e-4;
+
+/**
+ * Ageing judged beside the corners: all stages and one stage of each group with the capacitance of the end of life (or as
+ * measured), p and tuned order falling with it, and the capacitance at which a stage must come out: where the verdict
+ * first turns graver as one stage's capacitance falls.
+ * @param model the network without the bank
+ * @param bank the bank
+ * @param basis what it is judged by
+ * @param given the bank of the site file, which says whether it is installed and what was measured; null for a new one
+ * @returns cases and the end of each group's stages; none for an empty bank
+ * @source method-ageing
+ */
+export function ageing(model: NetworkModel, bank: Bank, basis: JudgeBasis, given: BankInput | null): Ageing {
+  if (bank.groups.length === 0) return { cases: [], stages: [] };
+  const { frequencyHz } = basis;
+  const from = given?.installed === true ? 'installed' : 'new';
+  const all = aged(bank, null, END_OF_LIFE[from]);
+  const levels = bankLevels(all, basis.voltages.nominalV);
+  const cases: AgedCase[] = [
+    {
+      ...described(all, null, { frequencyHz, factor: END_OF_LIFE[from], from }),
+      verdict: judgeBank(model, all, levels, basis).verdict,
+    },
+  ];
+  const verdictOf = (one: Bank): Verdict | null => flowsVerdict(model, one, basis);
+  for (const [g, group] of bank.groups.entries()) {
+    const measuredUf = given?.stages[g]?.measuredUf;
+    const nameplateUf = deltaCapacitanceUf(group, frequencyHz);
+    const factor = measuredUf === undefined ? END_OF_LIFE[from] : measuredUf / nameplateUf;
+    const alone = aged(bank, g, factor);
+    const how = measuredUf === undefined ? from : 'measured';
+    cases.push({ ...described(alone, g, { frequencyHz, factor, from: how }), verdict: verdictOf(alone) });
+  }
+  return { cases, stages: bank.groups.map((_, g) => stageEnd(bank, g, { frequencyHz, verdictOf })) };
+}
+
+function described(
+  bank: Bank,
+  group: number | null,
+  { frequencyHz, factor, from }: { frequencyHz: number; factor: number; from: AgedCase['from'] },
+): Omit<AgedCase, 'verdict'> {
+  const stages = group === null ? bank.groups : [bank.groups[bank.groups.length - 1]!];
+  const ratios = new Set(stages.map(({ reactorPct }) => reactorPct));
+  const reactorPct = ratios.size === 1 ? stages[0]!.reactorPct : null;
+  return {
+    group,
+    capacitanceFactor: factor,
+    from,
+    capacitanceUf: group === null ? null : deltaCapacitanceUf(stages[0]!, frequencyHz),
+    reactorPct,
+    tunedOrderH: reactorPct === null ? null : tunedOrderH(reactorPct),
+  };
+}
+
+/**
+ * A bank with less capacitance: Q and p fall in proportion, the reactor stays as it is.
+ * @param bank the bank
+ * @param group group of which one stage has aged, moved to the end of the list; null for all stages
+ * @param factor share of the nameplate's capacitance
+ * @returns the bank as it has become
+ * @source derived: X_C = 1/(ωC), p = X_L/X_C
+ */
+export function aged(bank: Bank, group: number | null, factor: number): Bank {
+  const less = (of: StageGroup): StageGroup => ({
+    ...of,
+    ratedKvar: of.ratedKvar * factor,
+    reactorPct: of.reactorPct * factor,
+  });
+  if (group === null) return { ...bank, groups: bank.groups.map(less) };
+  const rest = bank.groups.flatMap((of, g) =>
+    g !== group ? [of] : of.count > 1 ? [{ ...of, count: of.count - 1 }] : [],
+  );
+  return { ...bank, groups: [...rest, { ...less(bank.groups[group]!), count: 1 }] };
+}
+
+// Flows of every level and corner; a peak near an order present is looked for in the case of all stages alone.
+function flowsVerdict(model: NetworkModel, bank: Bank, basis: JudgeBasis): Verdict | null {
+  try {
+    return quickJudge(model, bank, basis).verdict;
+  } catch (error) {
+    if (error instanceof InputProblem && error.code === 'too-many-levels') return null;
+    throw error;
+  }
+}
+
+function stageEnd(
+  bank: Bank,
+  g: number,
+  { frequencyHz, verdictOf }: { frequencyHz: number; verdictOf(bank: Bank): Verdict | null },
+): StageEnd {
+  const verdictAt = (factor: number): Verdict | null => verdictOf(aged(bank, g, factor));
+  const whole = verdictAt(1);
+  const none = { group: g, comesOutUf: null, comesOutPct: null };
+  if (whole === null || whole === 'avoid') return none;
+  const worse = (factor: number): boolean => {
+    const verdict = verdictAt(factor);
+    return verdict !== null && graver(whole, verdict) !== whole;
+  };
+  let high = 1;
+  let low = 1 - FACTOR_STEP;
+  while (low >= LEAST_FACTOR - 1e-9 && !worse(low)) {
+    high = low;
+    low -= FACTOR_STEP;
+  }
+  if (low < LEAST_FACTOR - 1e-9) return none;
+  while (high - low > FACTOR_WIDTH) {
+    const middle = (low + high) / 2;
+    if (worse(middle)) low = middle;
+    else high = middle;
+  }
+  // The end that is still within the verdict.
+  return {
+    group: g,
+    comesOutUf: high * deltaCapacitanceUf(bank.groups[g]!, frequencyHz),
+    comesOutPct: 100 * high,
+  };
+}

@@ -1,0 +1,86 @@
+import type { Bank } from '../layout/bank.js';
+import type { Level } from '../layout/levels.js';
+import type { Flow } from '../network/bus-flow.js';
+import { bankModel, eachFlow } from '../network/flow.js';
+import type { NetworkModel } from '../network/network-model.js';
+import { branchRatio, stageBranch } from '../network/stage-admittance.js';
+import type { DutyVoltages } from './stage-duties.js';
+
+/** What one stage of a group is asked for, the worst over levels and corners. */
+export interface StageDemand {
+  /** rms current at the highest bus voltage [A] */
+  rmsA: number;
+  /** sum of the currents of all orders, whose crest the reactor must not saturate at [A] */
+  sumA: number;
+  /** rms voltage on the capacitor, line to line, the level's own rise counted [V] */
+  risenV: number;
+}
+
+/** What a bank is asked for. */
+export interface BankDemand {
+  groups: StageDemand[];
+  /** loss in the resistance of all reactors connected, the worst level and corner [W] */
+  reactorLossW: number;
+}
+
+/**
+ * What stages and reactors are asked for over every level and corner, at the highest bus voltage; the level's own rise,
+ * Q/S_k at the least fault level, is added for the capacitor's voltage.
+ * @param model the network without the bank
+ * @param bank the bank
+ * @param levels its levels
+ * @param site voltages [V] and least fault level [MVA]
+ * @returns one entry a group, and the reactors' loss
+ * @source method-devices
+ */
+export function bankDemand(
+  model: NetworkModel,
+  bank: Bank,
+  levels: Level[],
+  site: DutyVoltages & { shortCircuitMinMva: number },
+): BankDemand {
+  const demand: BankDemand = { groups: bank.groups.map(() => ({ rmsA: 0, sumA: 0, risenV: 0 })), reactorLossW: 0 };
+  const exponent = model.corners.networks[0]!.path.resistanceExponent;
+  const branches = model.corners.factors.map((factors) =>
+    bank.groups.map((group) => stageBranch(group, factors, exponent)),
+  );
+  eachFlow(model, bankModel(model, bank, levels), (flow) => {
+    let lossW = 0;
+    for (const [g, branch] of branches[flow.corner.factors]!.entries()) {
+      if (flow.vector[g] === 0) continue;
+      const rise = 1 + flow.levelKvar / (site.shortCircuitMinMva * 1000);
+      const ratio = branchRatio(branch);
+      const fundamentalA = site.highestV / Math.sqrt(3) / (branch.capacitiveOhm * (1 - ratio));
+      const met = stageMet(flow, g, branch, { fundamentalA, fundamentalV: (rise * site.highestV) / (1 - ratio) });
+      const group = demand.groups[g]!;
+      group.rmsA = Math.max(group.rmsA, met.rmsA);
+      group.sumA = Math.max(group.sumA, met.sumA);
+      group.risenV = Math.max(group.risenV, met.rmsV);
+      lossW += flow.vector[g]! * met.lossW;
+    }
+    demand.reactorLossW = Math.max(demand.reactorLossW, lossW);
+  });
+  return demand;
+}
+
+function stageMet(
+  flow: Flow,
+  g: number,
+  branch: ReturnType<typeof stageBranch>,
+  { fundamentalA, fundamentalV }: { fundamentalA: number; fundamentalV: number },
+): { rmsA: number; sumA: number; rmsV: number; lossW: number } {
+  let square = fundamentalA ** 2;
+  let sumA = fundamentalA;
+  let voltageSquare = fundamentalV ** 2;
+  let loss = branch.resistanceOhm * fundamentalA ** 2;
+  const currents = flow.stageA[g]!;
+  for (let i = 0; i < currents.length; i++) {
+    const a = currents[i]!;
+    const h = flow.ordersH[i]!;
+    square += a * a;
+    sumA += a;
+    voltageSquare += ((Math.sqrt(3) * a * branch.capacitiveOhm) / h) ** 2;
+    loss += branch.resistanceOhm * h ** branch.resistanceExponent * a * a;
+  }
+  return { rmsA: Math.sqrt(square), sumA, rmsV: Math.sqrt(voltageSquare), lossW: 3 * loss };
+}

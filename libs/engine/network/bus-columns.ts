@@ -1,0 +1,133 @@
+import { type ComplexColumn, LEAST_SIEMENS } from './bus-admittance.js';
+import { type NetworkModel, tableAt } from './network-model.js';
+import { type NodalTable, nodalTable } from './nodal-impedance.js';
+
+/**
+ * What a bus and the bank's bus know of each other with the bank out, over orders. Connecting the bank is a rank-1
+ * change: Z_ii = z_ii − z_ib²·Y/(1 + Y·z_bb), so a level costs a few multiplications and no factorisation.
+ */
+export interface BusColumns {
+  /** Y₀ at the bank's bus, 1/z_bb [S] */
+  bank: ComplexColumn;
+  /** null where the bus is the bank's own */
+  other: { self: ComplexColumn; toBank: ComplexColumn } | null;
+}
+
+/**
+ * Columns of one bus in one network.
+ * @param model the network without the bank
+ * @param network index into the corners' networks
+ * @param bus index of the bus
+ * @param ordersH orders h ≥ 1, length n
+ * @returns columns of length n
+ * @source method-network
+ */
+export function busColumns(model: NetworkModel, network: number, bus: number, ordersH: Float64Array): BusColumns {
+  const nodal = model.nodal?.cases[network];
+  if (nodal === undefined) return { bank: tableAt(model, network, ordersH).bus, other: null };
+  const table = nodalTable(nodal, ordersH);
+  const bankNode = nodal.busNode[model.bankBus]!;
+  const bank = reciprocal(tableColumn(table, bankNode, bankNode));
+  return { bank, other: otherColumns(table, nodal.busNode[bus]!, bankNode) };
+}
+
+/**
+ * Columns of every bus in one network, from one factorisation an order.
+ * @param model the network without the bank
+ * @param network index into the corners' networks
+ * @param ordersH orders h ≥ 1, length n
+ * @returns columns of length n, in the order of the buses; buses that are one node share theirs
+ * @source method-network
+ */
+export function networkColumns(model: NetworkModel, network: number, ordersH: Float64Array): BusColumns[] {
+  const nodal = model.nodal?.cases[network];
+  if (nodal === undefined) return [busColumns(model, network, 0, ordersH)];
+  const table = nodalTable(nodal, ordersH);
+  const bankNode = nodal.busNode[model.bankBus]!;
+  const bank = reciprocal(tableColumn(table, bankNode, bankNode));
+  const perNode = [...new Set(nodal.busNode)]
+    .sort((a, b) => a - b)
+    .map((node) => ({ bank, other: otherColumns(table, node, bankNode) }));
+  return Array.from(nodal.busNode, (node) => perNode[node]!);
+}
+
+function otherColumns(table: NodalTable, node: number, bankNode: number): BusColumns['other'] {
+  if (node === bankNode) return null;
+  return { self: tableColumn(table, node, node), toBank: tableColumn(table, node, bankNode) };
+}
+
+function tableColumn(table: NodalTable, row: number, column: number): ComplexColumn {
+  const n = table.nodes;
+  const length = table.ordersH.length;
+  const out: ComplexColumn = { re: new Float64Array(length), im: new Float64Array(length) };
+  for (let i = 0, at = 2 * (row * n + column); i < length; i++, at += 2 * n * n) {
+    out.re[i] = table.z[at]!;
+    out.im[i] = table.z[at + 1]!;
+  }
+  return out;
+}
+
+function reciprocal({ re, im }: ComplexColumn): ComplexColumn {
+  const out: ComplexColumn = { re: new Float64Array(re.length), im: new Float64Array(re.length) };
+  for (let i = 0; i < re.length; i++) {
+    const square = re[i]! * re[i]! + im[i]! * im[i]!;
+    out.re[i] = re[i]! / square;
+    out.im[i] = -im[i]! / square;
+  }
+  return out;
+}
+
+/**
+ * Admittance of the bank at a count vector: Y = Σ n_g·y_g.
+ * @param stages y of one stage of each group [S], length n
+ * @param vector connected stages per group
+ * @param length n
+ * @returns Y [S]
+ */
+export function bankColumn(stages: readonly ComplexColumn[], vector: Int32Array, length: number): ComplexColumn {
+  const out: ComplexColumn = { re: new Float64Array(length), im: new Float64Array(length) };
+  for (const [g, { re, im }] of stages.entries()) {
+    const count = vector[g]!;
+    if (count === 0) continue;
+    for (let i = 0; i < length; i++) {
+      out.re[i]! += count * re[i]!;
+      out.im[i]! += count * im[i]!;
+    }
+  }
+  return out;
+}
+
+/**
+ * 1/|Z_ii|² of a bus with the bank connected.
+ * @param columns the bus and the bank's bus
+ * @param bank Y of the bank [S]
+ * @param out receives 1/|Z|² [S²]
+ * @source method-network
+ */
+export function seenSquareInto(columns: BusColumns, bank: ComplexColumn, out: Float64Array): void {
+  const { re: gRe, im: gIm } = columns.bank;
+  if (columns.other === null) {
+    for (let i = 0; i < out.length; i++) {
+      const re = gRe[i]! + bank.re[i]!;
+      const im = gIm[i]! + bank.im[i]!;
+      out[i] = Math.max(LEAST_SIEMENS * LEAST_SIEMENS, re * re + im * im);
+    }
+    return;
+  }
+  const { self, toBank } = columns.other;
+  for (let i = 0; i < out.length; i++) {
+    // With Y₀ = 1/z_bb: Z = z_ii − (z_ib·Y₀)·z_ib·Y/(Y₀ + Y).
+    const tRe = toBank.re[i]! * toBank.re[i]! - toBank.im[i]! * toBank.im[i]!;
+    const tIm = 2 * toBank.re[i]! * toBank.im[i]!;
+    const aRe = gRe[i]! * bank.re[i]! - gIm[i]! * bank.im[i]!;
+    const aIm = gRe[i]! * bank.im[i]! + gIm[i]! * bank.re[i]!;
+    const sRe = gRe[i]! + bank.re[i]!;
+    const sIm = gIm[i]! + bank.im[i]!;
+    const square = Math.max(LEAST_SIEMENS * LEAST_SIEMENS, sRe * sRe + sIm * sIm);
+    const fRe = (aRe * sRe + aIm * sIm) / square;
+    const fIm = (aIm * sRe - aRe * sIm) / square;
+    const zRe = self.re[i]! - (tRe * fRe - tIm * fIm);
+    const zIm = self.im[i]! - (tRe * fIm + tIm * fRe);
+    out[i] = 1 / (zRe * zRe + zIm * zIm);
+  }
+}

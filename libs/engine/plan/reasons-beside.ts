@@ -1,0 +1,183 @@
+import type { Ageing } from '../duty/ageing.js';
+import { type DeviceRow, shortDevices, shortVerdict } from '../duty/device-row.js';
+import type { Duty } from '../duty/duty-row.js';
+import type { LimitsPoint } from '../duty/limits-point.js';
+import type { MeasuredCheck } from '../duty/measured-check.js';
+import { graver, type Verdict } from '../duty/rules.js';
+import type { Bank } from '../layout/bank.js';
+import type { Control } from '../operation/control.js';
+import { type Remark, remark } from '../problem.js';
+import type { Study } from './study.js';
+
+/** What is judged beside the network and the duties. */
+export interface Beside {
+  limits: LimitsPoint;
+  devices: DeviceRow[];
+  ageing: Ageing;
+  measured: MeasuredCheck | null;
+}
+
+/**
+ * What devices and measurements make of the verdict: a device short by a standard rules the bank out, by custom asks for a
+ * second look; so does a reading above every corner of the model.
+ * @param beside devices, ageing, measurement
+ * @returns `clear` where nothing speaks against it; ageing never counts
+ * @source method-devices, method-measured, method-ageing
+ */
+export function verdictBeside({ devices, measured }: Beside): Verdict {
+  const short = shortDevices(devices).reduce<Verdict>((worst, row) => graver(worst, shortVerdict(row)), 'clear');
+  const above = (measured?.rows ?? []).some(({ standing }) => standing === 'above');
+  return graver(short, above ? 'watch' : 'clear');
+}
+
+/**
+ * What devices, measurement, ageing, fast loads and the point judged give to say.
+ * @param study site and record
+ * @param bank the bank
+ * @param made settings, and the duties that were judged already
+ * @param beside devices, ageing, measurement
+ * @returns reasons, without words
+ * @source method-devices, method-measured, method-ageing
+ */
+export function reasonsBeside(
+  study: Study,
+  bank: Bank,
+  made: { control: Control; duties: readonly Duty[] },
+  beside: Beside,
+): Remark[] {
+  const { control, duties } = made;
+  return [
+    ...shortDevices(beside.devices).map(deviceReason),
+    ...riseReasons(beside.devices, duties),
+    ...measuredReasons(beside.measured, study.site.facts.measured?.bankKvar ?? 0),
+    ...(bank.groups.length === 0 ? [] : [...ageingReasons(beside.ageing), ...loadReasons(study, control)]),
+    ...pointReasons(beside.limits),
+  ];
+}
+
+// Within its limit by the highest bus voltage that was entered, over it where the level's own rise is not in that voltage.
+function riseReasons(devices: readonly DeviceRow[], duties: readonly Duty[]): Remark[] {
+  const over = (group: number | null): boolean =>
+    duties.some(
+      (duty) => duty.group === group && duty.name === 'capacitor voltage, highest' && duty.verdict === 'avoid',
+    );
+  return devices
+    .filter(({ device, state, group }) => device === 'capacitor.voltage' && state === 'short' && !over(group))
+    .map(({ group, fitted, least, unit, source }) =>
+      remark(
+        'device.riseOverLimit',
+        { group: group! + 1, value: fitted!, limit: least! },
+        { unit, source, path: 'bus.highestV' },
+      ),
+    );
+}
+
+function deviceReason(row: DeviceRow): Remark {
+  const values: Record<string, number | string> = { device: row.device };
+  if (row.group !== null) values.group = row.group + 1;
+  if (row.fitted !== null) values.value = row.fitted;
+  const { least, most } = row;
+  const passed =
+    typeof row.fitted === 'number' && typeof most === 'number' && row.fitted > most ? most : (least ?? most);
+  if (passed !== null) values.limit = passed;
+  return remark(shortCode(row), values, { unit: row.unit, source: row.source });
+}
+
+function shortCode(row: DeviceRow): string {
+  if (row.basis === 'site') return 'device.noResponse';
+  return shortVerdict(row) === 'avoid' ? 'device.short' : 'device.shortByPractice';
+}
+
+function measuredReasons(measured: MeasuredCheck | null, bankKvar: number): Remark[] {
+  if (measured === null) return [];
+  if (measured.levelKvar === null)
+    return [remark('measured.noLevel', { bankKvar }, { path: 'loads.measured.bankKvar' })];
+  const off = measured.rows.filter(({ standing }) => standing !== 'within');
+  return off.map(({ quantity, orderH, unit, standing, low, high, ...row }) =>
+    remark(
+      standing === 'above' ? 'measured.above' : 'measured.below',
+      { quantity, orderH, value: row.measured, limit: standing === 'above' ? high : low, bus: measured.bus },
+      { unit, path: 'loads.measured' },
+    ),
+  );
+}
+
+function ageingReasons({ cases, stages }: Ageing): Remark[] {
+  // What was measured, against the capacitance at which that stage must come out.
+  const due = cases.flatMap(({ group, from, capacitanceUf }) => {
+    const comesOutUf = group === null ? null : stages[group]!.comesOutUf;
+    if (from !== 'measured' || group === null || capacitanceUf === null || comesOutUf === null) return [];
+    if (capacitanceUf >= comesOutUf) return [];
+    return [
+      remark(
+        'ageing.takeOut',
+        { group: group + 1, capacitanceUf, comesOutUf },
+        { path: `bank.stages[${group}].measuredUf` },
+      ),
+    ];
+  });
+  return [...due, ...limitReasons(cases)];
+}
+
+function limitReasons(cases: Ageing['cases']): Remark[] {
+  return cases
+    .filter(({ verdict }) => verdict === 'avoid')
+    .map(({ group, capacitanceFactor, tunedOrderH }) => {
+      const values: Record<string, number | string> = { leftPct: 100 * capacitanceFactor };
+      if (group !== null) values.group = group + 1;
+      if (tunedOrderH !== null) values.tunedOrderH = tunedOrderH;
+      return remark('ageing.overLimit', values, { source: 'practice' });
+    });
+}
+
+function loadReasons(study: Study, control: Control): Remark[] {
+  const { fast, photovoltaicKw } = study.site.facts;
+  const found = fast.map(({ name, swingS, swingKvar }) => {
+    const values: Record<string, number | string> = { name, stepDelayS: control.stepDelayS };
+    if (swingS !== undefined) values.swingS = swingS;
+    if (swingKvar !== undefined) values.swingKvar = swingKvar;
+    return remark('loads.fast', values, { path: 'loads.fast' });
+  });
+  if (photovoltaicKw > 0)
+    found.push(remark('supply.photovoltaic', { photovoltaicKw }, { path: 'supply.photovoltaicKw' }));
+  return found;
+}
+
+function pointReasons({ voltage, points, couplingPoint, atCouplingPoint }: LimitsPoint): Remark[] {
+  if (atCouplingPoint) return [];
+  return [remark('limits.notCouplingPoint', { edition: voltage, point: points.join(', '), couplingPoint })];
+}
+
+/**
+ * Where a transformer lies between the bus and the network, that the bus is the point of coupling is an assumption.
+ * @param study site and record
+ * @param limits the point judged
+ * @returns one line or none
+ */
+export function pointAssumption(study: Study, limits: LimitsPoint): Remark[] {
+  const { site } = study;
+  if (site.topology !== null || site.supply.transformers.length === 0 || !limits.atCouplingPoint) return [];
+  return [remark('default.limits.point', { point: limits.couplingPoint }, { path: 'meteredAt' })];
+}
+
+/**
+ * Where copies of a standard disagree the tighter one is used, and said so where an order present meets it.
+ * @param study site and record
+ * @returns one line or none
+ */
+export function copyNote(study: Study): Remark[] {
+  const { limits, emcClass } = study.site;
+  const met = study.model.excitation.ordersH.includes(DISPUTED.orderH);
+  if (limits.edition !== DISPUTED.edition || emcClass !== DISPUTED.emcClass || !met) return [];
+  const { edition, orderH, usedPct, otherPct } = DISPUTED;
+  return [remark('limits.tighterCopy', { edition, orderH, usedPct, otherPct }, { path: 'limits.edition' })];
+}
+
+/** The one row of which copies were seen to differ. */
+const DISPUTED = {
+  edition: 'IEC 61000-2-4:2002',
+  emcClass: 2,
+  orderH: 21,
+  usedPct: 0.2,
+  otherPct: 0.3,
+} as const;

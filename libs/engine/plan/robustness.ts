@@ -1,0 +1,176 @@
+import { type FirmVerdict, firmVerdict } from '../duty/quick-judge.js';
+import type { Verdict } from '../duty/rules.js';
+import type { Bank } from '../layout/bank.js';
+import type { Loads } from '../network/loads.js';
+import { siteNetwork } from '../network/network-model.js';
+import type { Control } from '../operation/control.js';
+import { basisOf, type Judged, overallVerdict } from './judge-basis.js';
+import type { SettledSite } from './settled-site.js';
+
+/** What is moved to see how far the verdict stands. */
+export const MOVED_QUANTITIES = ['fault level', 'load', 'background', 'capacitance'] as const;
+
+export type MovedQuantity = (typeof MOVED_QUANTITIES)[number];
+
+/** The range of one quantity, relative to its value, within which the verdict stays the same. */
+export interface StandingRange {
+  quantity: MovedQuantity;
+  /** factor at which the verdict changes going down; null where it stands to the least that was tried */
+  lowFactor: number | null;
+  highFactor: number | null;
+  /** verdict beyond each end */
+  verdictBelow: Verdict | null;
+  verdictAbove: Verdict | null;
+  /** least and greatest factor that were tried */
+  leastTried: number;
+  mostTried: number;
+}
+
+/** The bank with one stage of a group out. */
+export interface StageOut {
+  group: number;
+  verdict: Verdict;
+  worstDuty: string | null;
+  worstRatio: number | null;
+}
+
+/** How firm the verdict is. */
+export interface Robustness {
+  ranges: StandingRange[];
+  stageOut: StageOut[];
+}
+
+const TRIED: Record<MovedQuantity, [number, number]> = {
+  'fault level': [0.25, 4],
+  load: [0.25, 4],
+  background: [0, 4],
+  capacitance: [0.6, 1.2],
+};
+/** Steps of the search for a change of verdict, on either side, before it is closed in on. */
+const STEPS = 8;
+/** A change is closed in on to this share. */
+const CLOSED_IN = 1e-3;
+
+/**
+ * How far fault level, load, background and capacitance can move before the verdict changes. The change nearest to
+ * the present value is looked for outwards in even steps of the logarithm, and closed in on by bisection.
+ * @param study site and record
+ * @param bank the bank
+ * @param control settings
+ * @returns ranges, and the bank with one stage of each group out
+ * @source method-robustness
+ */
+export function robustness(study: Judged, bank: Bank, control: Control): Robustness {
+  const present = overallVerdict(study, judgeMoved(study, bank, control, { quantity: 'load', factor: 1 }));
+  return {
+    ranges: MOVED_QUANTITIES.filter((quantity) => applies(study.site, quantity)).map((quantity) => {
+      const verdictAt = (factor: number): Verdict =>
+        overallVerdict(study, judgeMoved(study, bank, control, { quantity, factor }));
+      const [leastTried, mostTried] = TRIED[quantity];
+      const down = changeTowards(verdictAt, present, leastTried);
+      const up = changeTowards(verdictAt, present, mostTried);
+      return {
+        quantity,
+        lowFactor: down?.factor ?? null,
+        highFactor: up?.factor ?? null,
+        verdictBelow: down?.verdict ?? null,
+        verdictAbove: up?.verdict ?? null,
+        leastTried,
+        mostTried,
+      };
+    }),
+    stageOut: bank.groups.map((_, g) => stageOut(study, bank, control, g)),
+  };
+}
+
+function applies(site: SettledSite, quantity: MovedQuantity): boolean {
+  return quantity !== 'background' || (site.loads.backgroundPct ?? []).length > 0;
+}
+
+function changeTowards(
+  verdictAt: (factor: number) => Verdict,
+  present: Verdict,
+  end: number,
+): { factor: number; verdict: Verdict } | null {
+  let same = 1;
+  for (let step = 1; step <= STEPS; step++) {
+    const next = end > 0 ? end ** (step / STEPS) : 1 - step / STEPS;
+    if (verdictAt(next) === present) {
+      same = next;
+      continue;
+    }
+    let other = next;
+    while (Math.abs(other - same) > CLOSED_IN * Math.max(same, other)) {
+      const middle = (same + other) / 2;
+      if (verdictAt(middle) === present) same = middle;
+      else other = middle;
+    }
+    return { factor: other, verdict: verdictAt(other) };
+  }
+  return null;
+}
+
+// The bank judged with one quantity moved; the record itself is not simulated again, since duties rest on the network.
+function judgeMoved(
+  study: Judged,
+  bank: Bank,
+  control: Control,
+  { quantity, factor }: { quantity: MovedQuantity; factor: number },
+): FirmVerdict {
+  const { site, model } = study;
+  const loads =
+    quantity === 'load' || quantity === 'background' ? movedLoads(site.loads, quantity, factor) : site.loads;
+  const { max, min } = site.supply.faultLevelMva;
+  const strength = quantity === 'fault level' ? factor : 1;
+  const supply = { ...site.supply, faultLevelMva: { max: max * strength, min: min * strength } };
+  const loadA = quantity === 'load' ? model.loadA * factor : model.loadA;
+  const moved = siteNetwork(supply, loads, { nominalV: site.nominalV, loadA, topology: site.topology });
+  const aged = quantity === 'capacitance' ? withCapacitance(bank, factor) : bank;
+  const basis = { ...basisOf(study, control), supply, loads };
+  return firmVerdict(moved, aged, basis);
+}
+
+function movedLoads(loads: Loads, quantity: 'load' | 'background', factor: number): Loads {
+  if (quantity === 'background') {
+    const backgroundPct = loads.backgroundPct?.map(({ orderH, pct }) => ({ orderH, pct: pct * factor })) ?? null;
+    return { ...loads, backgroundPct };
+  }
+  return {
+    ...loads,
+    distorting: loads.distorting?.map((load) => ({ ...load, fundamentalA: load.fundamentalA * factor })) ?? null,
+    dampingKw: { max: loads.dampingKw.max * factor, min: loads.dampingKw.min * factor },
+  };
+}
+
+/**
+ * A bank whose capacitance has changed: kvar and reactor ratio both go with C, since the reactor stays.
+ * @param bank the bank
+ * @param factor C relative to the nameplate
+ * @returns the bank as it would measure
+ * @source method-robustness
+ */
+export function withCapacitance(bank: Bank, factor: number): Bank {
+  return {
+    ...bank,
+    groups: bank.groups.map((group) => ({
+      ...group,
+      ratedKvar: group.ratedKvar * factor,
+      reactorPct: group.reactorPct * factor,
+    })),
+  };
+}
+
+function stageOut(study: Judged, bank: Bank, control: Control, g: number): StageOut {
+  const groups = bank.groups.flatMap((group, k) => {
+    if (k !== g) return [group];
+    return group.count > 1 ? [{ ...group, count: group.count - 1 }] : [];
+  });
+  const rest = { ...bank, groups };
+  const judged = firmVerdict(study.model, rest, basisOf(study, control));
+  return {
+    group: g,
+    verdict: overallVerdict(study, judged),
+    worstDuty: judged.worst?.name ?? null,
+    worstRatio: judged.worst?.ratio ?? null,
+  };
+}

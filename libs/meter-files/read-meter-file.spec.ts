@@ -1,0 +1,81 @@
+import { describe, expect, it } from 'vitest';
+import { InputProblem, Stopped } from '#libs/engine/index.js';
+import { lines, readMeterText, refusalOf, streamOf } from '../../test/support/meter-text.js';
+import { FORMATS } from './formats.js';
+import { MAX_INTERVALS } from './meter-format.js';
+import { readMeterFile } from './read-meter-file.js';
+
+const rows = Array.from({ length: 2000 }, (_, i) => `${new Date(Date.UTC(2024, 4, 6) + i * 60_000).toISOString()},1,1`);
+const content = lines('time,kW,kvar', ...rows);
+
+describe('a meter file', () => {
+  it('is recognised by its first bytes, or read as what the caller says it is', async () => {
+    expect((await readMeterText(content)).quality.format).toBe('csv');
+    expect((await readMeterText(content, { format: 'csv' })).quality.format).toBe('csv');
+    expect((await refusalOf(content, { format: 'nem12' })).code).toBe('unreadable');
+    expect((await refusalOf(content, { format: 'tea leaves' })).problems).toMatchObject([
+      { code: 'unknown-format', path: 'format' },
+    ]);
+    expect((await refusalOf(content, { map: { format: 'nem12' } })).code).toBe('unreadable');
+  });
+
+  it('is refused where it holds nothing, or nothing that is text', async () => {
+    expect((await refusalOf('')).code).toBe('empty-file');
+    expect((await refusalOf('\ufeff \r\n')).code).toBe('empty-file');
+    expect((await refusalOf(Uint8Array.of(0x50, 0x4b, 3, 4, 0x14, 0, 0, 0))).code).toBe('unknown-format');
+  });
+
+  it('is read alike in chunks of any size', async () => {
+    const whole = await readMeterText(content);
+    for (const chunkBytes of [1, 7, 4096]) expect(await readMeterFile(streamOf(content, chunkBytes))).toEqual(whole);
+  });
+
+  it('tells how far it is, and stops when it is told to', async () => {
+    const fractions: number[] = [];
+    const watch = { report: (fraction: number) => void fractions.push(fraction), stopped: () => fractions.length >= 3 };
+    const reading = readMeterFile(streamOf(content, 8192), { watch, sizeBytes: content.length });
+    await expect(reading).rejects.toBeInstanceOf(Stopped);
+    expect(fractions).toEqual([...fractions].sort((a, b) => a - b));
+    expect(fractions.every((fraction) => fraction > 0 && fraction < 1)).toBe(true);
+  });
+
+  it('lets its source close when it is refused', async () => {
+    let closed = false;
+    async function* source() {
+      try {
+        for (;;) yield new TextEncoder().encode('time,kW\n2024-05-06 00:00,1\n'.repeat(20_000));
+      } finally {
+        closed = true;
+      }
+    }
+    await expect(readMeterFile(source())).rejects.toBeInstanceOf(InputProblem);
+    expect(closed).toBe(true);
+  });
+
+  it('is refused beyond the longest record, naming the limit', async () => {
+    async function* endless() {
+      yield new TextEncoder().encode('time,kW,kvar\n');
+      for (let day = 0; ; day++) {
+        const date = new Date(Date.UTC(2010, 0, 1) + day * 86_400_000).toISOString().slice(0, 10);
+        const minutes = Array.from(
+          { length: 1440 },
+          (_, i) => `${date} ${String(Math.floor(i / 60)).padStart(2, '0')}:${String(i % 60).padStart(2, '0')},1,1\n`,
+        );
+        yield new TextEncoder().encode(minutes.join(''));
+      }
+    }
+    const problem = await readMeterFile(endless()).catch((error: unknown) => error);
+    expect(problem).toBeInstanceOf(InputProblem);
+    expect((problem as InputProblem).problems).toMatchObject([
+      { code: 'too-large', expected: `a record of at most ${MAX_INTERVALS} intervals` },
+    ]);
+  });
+
+  it('has formats that each name their public description', () => {
+    expect(FORMATS.map(({ name }) => name)).toEqual(['nem12', 'csv']);
+    for (const { title, described } of FORMATS) {
+      expect(title).not.toBe('');
+      expect(described.length).toBeGreaterThan(0);
+    }
+  });
+});
