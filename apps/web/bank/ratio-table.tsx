@@ -86,8 +86,7 @@ function TrialCells({ row }: { row: ReactorTrial }) {
       <td>
         <VerdictWords verdict={verdict} />
         {worstDuty === null || worstRatio === null ? null : (
-          <span className="caption">
-            {' '}
+          <span className="caption beneath">
             {worstDuty}, {formatQuantity(100 * worstRatio, '%', 'whole')}
           </span>
         )}

@@ -12,7 +12,7 @@ import { followJob, type JobEnd, keptJob } from './follow-job.js';
 import type { Firmness, Look, LookAsked, Picks, Trace } from './look.js';
 import { mergedLook } from './merged-look.js';
 
-/** How long to wait for the first plan of a site whose plan is being made elsewhere [ms]. */
+/** Wait for a first plan that is being made elsewhere [ms]. */
 const FIRST_PLAN_MS = 1500;
 
 /** Everything one site's page does: holds what is typed, asks the engine and the server, and says what came of it. */
@@ -68,10 +68,10 @@ export class SiteDesk {
 
   openStation(station: Station): void {
     this.#station = station;
-    if (this.#engine !== null) this.#look(true);
+    this.#look(true);
   }
 
-  /** A field was typed in: a value the document takes, or a text that is none yet. */
+  /** A field was typed in: a value, or a text that is none yet. */
   type(path: string, text: string, read: { value: unknown } | null): void {
     const { [path]: _, ...others } = this.#state.typed;
     if (read === null) {
@@ -91,14 +91,14 @@ export class SiteDesk {
 
   pick(picks: Partial<Picks>): void {
     this.#set({ picks: { ...this.#state.picks, ...picks } });
-    if (this.#engine !== null) this.#look(false);
+    this.#look(false);
   }
 
   /** Puts everything back to what was kept. */
   putBack(): void {
     dropDraft(this.siteId);
     this.#set({ document: this.#state.site!.site, trial: null, typed: {}, problems: [] });
-    if (this.#engine !== null) this.#look(true);
+    this.#look(true);
   }
 
   /**
@@ -137,8 +137,7 @@ export class SiteDesk {
   }
 
   async cancelJob(): Promise<void> {
-    const { job } = this.#state;
-    if (job !== null) await ask(`/api/jobs/${job.id}`, { method: 'DELETE' }).catch((error) => this.#hear(error));
+    await ask(`/api/jobs/${this.#state.job?.id}`, { method: 'DELETE' }).catch((error) => this.#hear(error));
   }
 
   /** Of two versions: the other window's is taken, or this one goes on, built on theirs. */
@@ -185,7 +184,7 @@ export class SiteDesk {
   #lookAgain(): void {
     if (this.#closed || this.#state.job !== null || this.#state.kept !== null) return;
     this.#refresh()
-      .then(() => this.#state.kept !== null && this.#engine !== null && this.#look(true))
+      .then(() => this.#state.kept !== null && this.#look(true))
       .catch((error) => this.#hear(error));
   }
 
@@ -218,7 +217,7 @@ export class SiteDesk {
   #edited(): void {
     const { site, document, trial } = this.#state;
     keepDraft(this.siteId, { version: site!.version, document: document!, trial });
-    if (this.#engine !== null) this.#look(false);
+    this.#look(false);
   }
 
   #prepareEngine(): void {
@@ -246,7 +245,7 @@ export class SiteDesk {
   }
 
   #look(isFullOnly: boolean): void {
-    this.#engine?.look(this.#asked(), isFullOnly);
+    if (this.#engine !== null) this.#engine.look(this.#asked(), isFullOnly);
   }
 
   #looked(look: Look, asked: LookAsked, tookMs: number): void {

@@ -36,7 +36,7 @@ export function OpenPoints({ siteId }: { siteId: string }) {
             {result === null ? 'nothing computed' : `${points.length} open ${points.length === 1 ? 'point' : 'points'}`}
           </span>
           <span className="third caption">
-            {most > 0 ? `${deciding} could change the verdict` : 'effects not computed yet'}
+            {most > 0 ? `${deciding === 0 ? 'none' : deciding} could change the verdict` : 'effects not computed yet'}
           </span>
         </div>
         <button
