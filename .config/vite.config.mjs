@@ -1,6 +1,7 @@
 // Builds the planner's page into dist/apps/web: one document at /, everything else under /page/.
-import react from '@vitejs/plugin-react';
+
 import { fileURLToPath } from 'node:url';
+import react from '@vitejs/plugin-react';
 import { defaultClientConditions, defineConfig } from 'vite';
 import { pageFonts } from './page-fonts.mjs';
 

@@ -3,7 +3,7 @@ import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { planContent } from '#libs/contract/plan-content.js';
 import { readSite } from '#libs/contract/read-site.js';
 import { zoneTableOf } from '#libs/contract/time-zone.js';
-import { assessBank, ENGINE_VERSION, planBank } from '#libs/engine/index.js';
+import { assessBank, ENGINE_VERSION, planBank, withRobustness } from '#libs/engine/index.js';
 import { readMeterFile } from '#libs/meter-files/read-meter-file.js';
 import { putInWords } from '#libs/present/put-in-words.js';
 import { databases, type TestDatabase } from '../support/databases.js';
@@ -24,7 +24,8 @@ for (const { name, available, create } of databases) {
     const direct = async (judge: typeof planBank, changes = {}) => {
       const site = readSite(siteFile(changes));
       const { record } = await readMeterFile(bytesOf(content), { siteTimeZone: site.timeZone });
-      return JSON.parse(JSON.stringify(putInWords(judge(site, record, zoneTableOf(site.timeZone, record)).result)));
+      const { result } = withRobustness(judge(site, record, zoneTableOf(site.timeZone, record)));
+      return JSON.parse(JSON.stringify(putInWords(result)));
     };
 
     beforeAll(async () => {

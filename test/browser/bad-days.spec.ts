@@ -1,7 +1,7 @@
 import type { Browser, Page } from 'playwright-core';
 import { afterAll, afterEach, beforeAll, beforeEach, describe, expect, it } from 'vitest';
 import { meterFile, siteFile } from '../api/site-builder.js';
-import { CHROMIUM, openPage, type OpenPage, startBrowser } from '../support/browser.js';
+import { CHROMIUM, type OpenPage, openPage, startBrowser } from '../support/browser.js';
 import { databases, type TestDatabase } from '../support/databases.js';
 import { startServer, type TestServer } from '../support/test-server.js';
 

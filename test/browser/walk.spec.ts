@@ -1,7 +1,7 @@
 import type { Browser, Locator, Page } from 'playwright-core';
 import { afterAll, afterEach, beforeAll, beforeEach, describe, expect, it } from 'vitest';
 import { demoLoad } from '#apps/server/demo/demo-load.js';
-import { CHROMIUM, openPage, type OpenPage, startBrowser } from '../support/browser.js';
+import { CHROMIUM, type OpenPage, openPage, startBrowser } from '../support/browser.js';
 import { databases, type TestDatabase } from '../support/databases.js';
 import { startServer, type TestServer } from '../support/test-server.js';
 
@@ -85,7 +85,7 @@ describe.runIf(CHROMIUM !== null)('the whole job, from an empty database to a do
 
     await page.getByRole('heading', { name: 'Drop a meter file' }).waitFor();
     await reach(page, page.locator('input[type=file]'));
-    const [chooser] = await Promise.all([page.waitForEvent('filechooser'), page.keyboard.press('Enter')]);
+    const [chooser] = await Promise.all([page.waitForEvent('filechooser'), page.keyboard.press('Space')]);
     await chooser.setFiles(METER_FILE);
     await page.getByRole('heading', { name: /A year of readings/ }).waitFor();
 

@@ -70,7 +70,8 @@ describe('the parts of a proposal', () => {
     expect(first).toContain(
       squeezed('Proposed: the site’s own bank, eight stages, 261 kvar at 400 V, with 7 % reactors.'),
     );
-    expect(first).toContain(squeezed('10 rows judged'));
+    // Five rows a group: two voltages, the current, both forms of inrush; two of the network. Reactors have no limit.
+    expect(first).toContain(squeezed('12 rows judged'));
     expect(first).toContain(squeezed('2 not judged'));
     expect(first).toContain(squeezed('Does not cover:'));
     expect(first).toContain(squeezed('not permission to energise'));

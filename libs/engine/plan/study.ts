@@ -1,9 +1,9 @@
 import type { Bank } from '../layout/bank.js';
 import { type NetworkModel, siteNetwork } from '../network/network-model.js';
 import type { Control } from '../operation/control.js';
+import type { ControllerView } from '../operation/controller-view.js';
 import { type MeterAfter, meterAfter } from '../operation/meter-after.js';
 import { type OperationMonth, operationMonths, type Simulated } from '../operation/operation.js';
-import type { ControllerView } from '../operation/controller-view.js';
 import { simulate } from '../operation/simulate.js';
 import { switchedBank } from '../operation/switched-bank.js';
 import type { Remark } from '../problem.js';
