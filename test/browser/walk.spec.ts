@@ -41,6 +41,7 @@ describe.runIf(CHROMIUM !== null)('the whole job, from an empty database to a do
     await page.getByText('0,25 GVA: 250').waitFor();
     await page.getByRole('button', { name: 'Add the site' }).click();
 
+    await page.getByRole('heading', { name: 'Drop a meter file' }).waitFor();
     await page.locator('input[type=file]').setInputFiles(METER_FILE);
     await page.getByRole('heading', { name: /A year of readings in steps of 15.min, without a gap/ }).waitFor();
 

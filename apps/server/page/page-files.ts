@@ -1,4 +1,4 @@
-import { existsSync, readdirSync, readFileSync } from 'node:fs';
+import { existsSync, readdirSync, readFileSync, statSync } from 'node:fs';
 import { extname, join } from 'node:path';
 import { fileURLToPath } from 'node:url';
 import { gzipSync } from 'node:zlib';
@@ -18,24 +18,44 @@ const TYPES: Record<string, string> = {
   '.woff2': 'font/woff2',
 };
 
-/** The built page, read once: a name that is not in it leads nowhere. */
+/** The built page, read as a whole: a name that is not in it leads nowhere. */
 export class PageFiles {
-  readonly #files = new Map<string, PageFile>();
+  readonly #root: string;
+  #files = new Map<string, PageFile>();
+  #builtMs = 0;
 
   /** @param folder what the build wrote; absent, the page is not there and the plain one stands in */
   constructor(folder: URL) {
-    const root = fileURLToPath(folder);
-    if (!existsSync(join(root, 'page'))) return;
-    for (const name of ['index.html', ...readdirSync(join(root, 'page')).map((file) => `page/${file}`)]) {
-      const type = TYPES[extname(name)];
-      if (type === undefined) continue;
-      const plain = readFileSync(join(root, name));
-      this.#files.set(name, { type, plain, gzip: type.startsWith('font') ? null : gzipSync(plain) });
-    }
+    this.#root = fileURLToPath(folder);
+    this.#readAgain();
   }
 
   /** @param name path from the page's root, without a leading slash */
   find(name: string): PageFile | null {
+    if (name === 'index.html') this.#readAgain();
     return this.#files.get(name) ?? null;
   }
+
+  /** A page that was built anew is served at the next visit. */
+  #readAgain(): void {
+    const index = join(this.#root, 'index.html');
+    const builtMs = existsSync(index) ? statSync(index).mtimeMs : 0;
+    if (builtMs === this.#builtMs) return;
+    this.#builtMs = builtMs;
+    const inside = existsSync(join(this.#root, 'page')) ? readdirSync(join(this.#root, 'page')) : [];
+    const names = builtMs === 0 ? [] : ['index.html', ...inside.map((file) => `page/${file}`)];
+    this.#files = new Map(
+      names.flatMap((name) => {
+        const file = readPageFile(join(this.#root, name));
+        return file === null ? [] : [[name, file]];
+      }),
+    );
+  }
+}
+
+function readPageFile(path: string): PageFile | null {
+  const type = TYPES[extname(path)];
+  if (type === undefined) return null;
+  const plain = readFileSync(path);
+  return { type, plain, gzip: type.startsWith('font') ? null : gzipSync(plain) };
 }

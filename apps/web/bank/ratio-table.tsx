@@ -1,42 +1,20 @@
-import { useEffect, useState } from 'react';
-import { formatNumber, formatQuantity } from '#libs/present/format-number.js';
+import type { ReactorTrial } from '#libs/engine/index.js';
+import { formatNumber, formatQuantity, formatRange } from '#libs/present/format-number.js';
 import { bankOf } from '../desk/desk-state.js';
-import type { RatioRow } from '../desk/look.js';
 import { useDesk } from '../desk/use-desk.js';
 import { VerdictWords } from '../draw/verdict-mark.js';
+import { latestResult } from '../line/latest-result.js';
 import { withRatio } from './stage-edits.js';
 
-/** The rows, asked for once the hand rests. */
-export function useRatios(): RatioRow[] {
+/** The same stages at each customary reactor ratio; a row is put in place by its button. */
+export function RatioTable() {
   const { desk, state } = useDesk();
-  const [rows, setRows] = useState<RatioRow[]>([]);
-  const { look } = state;
-  useEffect(() => {
-    if (look?.depth !== 'full') return undefined;
-    let isCurrent = true;
-    desk
-      .ratios()
-      .then((found) => isCurrent && setRows(found))
-      .catch(() => isCurrent && setRows([]));
-    return () => {
-      isCurrent = false;
-    };
-  }, [desk, look]);
-  return rows;
-}
-
-/** The same stages at each common reactor ratio; a row is put in place by its button. */
-export function RatioTable({ isWide = false }: { isWide?: boolean }) {
-  const { desk, state } = useDesk();
-  const rows = useRatios();
+  const rows = latestResult(state)?.reactorTrials ?? [];
   const bank = bankOf(state);
   return (
     <section className="section" aria-labelledby="ratios">
       <h2 id="ratios">The same stages at other reactor ratios</h2>
-      <p className="caption">
-        {isWide ? 'Percentages are of the limit, in the worst corner.' : 'One row is one bank.'} Choose a row to put it
-        in place.
-      </p>
+      <p className="caption">One row is one bank, judged at every level and corner. Choose a row to put it in place.</p>
       {/* biome-ignore lint/a11y/noNoninteractiveTabindex: a table that scrolls must be reached by keyboard */}
       <section className="table" tabIndex={0} aria-label="Reactor ratios">
         <table>
@@ -44,18 +22,12 @@ export function RatioTable({ isWide = false }: { isWide?: boolean }) {
             <tr>
               <th scope="col">reactors, rating</th>
               <th scope="col" className="right">
-                effective kvar
+                tuned order
               </th>
-              {isWide ? (
-                <th scope="col" className="right">
-                  tuned order
-                </th>
-              ) : null}
               <th scope="col" className="right">
-                peak, all in
+                peaks
               </th>
-              {isWide ? <WideHeads /> : null}
-              <th scope="col">verdict</th>
+              <th scope="col">verdict, nearest its limit</th>
               <th scope="col">
                 <span className="hidden">put in place</span>
               </th>
@@ -63,13 +35,17 @@ export function RatioTable({ isWide = false }: { isWide?: boolean }) {
           </thead>
           <tbody>
             {rows.map((row) => (
-              <tr key={row.reactorPct} className={row.isOwn ? 'own' : undefined}>
-                <RatioCells row={row} isWide={isWide} />
+              <tr key={row.reactorPct} className={row.chosen ? 'own' : undefined}>
+                <TrialCells row={row} />
                 <td>
-                  {row.isOwn || bank === null ? (
+                  {row.chosen || bank === null ? (
                     'as it stands'
                   ) : (
-                    <button type="button" className="way" onClick={() => desk.tryBank(withRatio(bank, row.reactorPct))}>
+                    <button
+                      type="button"
+                      className="way"
+                      onClick={() => desk.tryBank(withRatio(bank, row.reactorPct, row.ratedV))}
+                    >
                       Put in place<span className="hidden"> {ratioWords(row.reactorPct)}</span>
                     </button>
                   )}
@@ -79,41 +55,41 @@ export function RatioTable({ isWide = false }: { isWide?: boolean }) {
           </tbody>
         </table>
       </section>
-      {rows.length === 0 ? <p className="caption">Judged once the hand rests.</p> : null}
+      {rows.length > 0 ? null : (
+        <p className="caption">
+          {isMixed(bank)
+            ? 'The groups differ in their ratio, so there is none to compare.'
+            : 'Judged once the hand rests.'}
+        </p>
+      )}
     </section>
   );
 }
 
-function WideHeads() {
-  return ['harmonic voltage', 'capacitor voltage', 'capacitor current'].map((head) => (
-    <th key={head} scope="col" className="right">
-      {head}
-    </th>
-  ));
+function isMixed(bank: ReturnType<typeof bankOf>): boolean {
+  return new Set(bank?.stages.map(({ reactorPct }) => reactorPct ?? 0)).size > 1;
 }
 
-function RatioCells({ row, isWide }: { row: RatioRow; isWide: boolean }) {
-  const share = (value: number | null) => (
-    <td className="right">{value === null ? '–' : formatQuantity(value, '%', 'whole')}</td>
-  );
-  const order = (value: number | null) => <td className="right">{value === null ? '–' : formatNumber(value)}</td>;
+function TrialCells({ row }: { row: ReactorTrial }) {
+  const { reactorPct, ratedV, tunedOrderH, lowestPeakH, highestPeakH, verdict, worstDuty, worstRatio } = row;
+  const peaks =
+    lowestPeakH === null || highestPeakH === null
+      ? '–'
+      : formatRange({ low: lowestPeakH, high: highestPeakH }, '', 'computed');
   return (
     <>
       <th scope="row" className="nowrap">
-        {ratioWords(row.reactorPct)}, {formatQuantity(row.ratedV, 'V', 'given')}
+        {ratioWords(reactorPct)}, {formatQuantity(ratedV, 'V', 'given')}
       </th>
-      <td className="right">{formatNumber(row.effectiveKvar)}</td>
-      {isWide ? order(row.tunedOrderH) : null}
-      {order(row.parallelOrderH)}
-      {isWide ? (
-        <>
-          {share(row.harmonicVoltagePct)}
-          {share(row.capacitorVoltagePct)}
-          {share(row.capacitorCurrentPct)}
-        </>
-      ) : null}
+      <td className="right">{tunedOrderH === null ? '–' : formatNumber(tunedOrderH)}</td>
+      <td className="right nowrap">{peaks}</td>
       <td>
-        <VerdictWords verdict={row.verdict} />
+        <VerdictWords verdict={verdict} />
+        {worstDuty === null || worstRatio === null ? null : (
+          <span className="caption beneath">
+            {worstDuty}, {formatQuantity(100 * worstRatio, '%', 'whole')}
+          </span>
+        )}
       </td>
     </>
   );

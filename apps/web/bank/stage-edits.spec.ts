@@ -34,6 +34,6 @@ describe('a bank under the hand', () => {
 
   it('takes another ratio in every group; a nameplate inductance, which would contradict it, goes', () => {
     const stages = [{ ...BANK.stages[0]!, reactorMh: 1 }];
-    expect(withRatio({ stages }, 14).stages).toEqual([{ ...BANK.stages[0], reactorPct: 14 }]);
+    expect(withRatio({ stages }, 14, 525).stages).toEqual([{ ...BANK.stages[0], reactorPct: 14, ratedV: 525 }]);
   });
 });

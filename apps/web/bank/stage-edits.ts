@@ -37,7 +37,7 @@ export function withStageMoved(bank: BankInput, from: number, to: number): BankI
   return bankFrom(bank, stages);
 }
 
-/** Every group at another reactor ratio. */
-export function withRatio(bank: BankInput, reactorPct: number): BankInput {
-  return { ...bank, stages: bank.stages.map(({ reactorMh: _, ...group }) => ({ ...group, reactorPct })) };
+/** Every group at another reactor ratio, and at the voltage its capacitors then need. */
+export function withRatio(bank: BankInput, reactorPct: number, ratedV: number): BankInput {
+  return { ...bank, stages: bank.stages.map(({ reactorMh: _, ...group }) => ({ ...group, reactorPct, ratedV })) };
 }

@@ -60,6 +60,6 @@ interface Answers {
   opened: AnswerOf<'opened'>;
   look: AnswerOf<'look'>;
   warm: AnswerOf<'warm'>;
-  ratios: AnswerOf<'ratios'>;
+  firm: AnswerOf<'firm'>;
   trace: AnswerOf<'trace'>;
 }

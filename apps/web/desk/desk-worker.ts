@@ -1,12 +1,11 @@
 /// <reference lib="webworker" />
 import { zoneTableOf } from '#libs/contract/time-zone.js';
-import { createLoadRecord, InputProblem, type Outcome, type Site } from '#libs/engine/index.js';
+import { createLoadRecord, InputProblem, type Outcome, type Site, withRobustness } from '#libs/engine/index.js';
 import { findings } from '#libs/present/findings.js';
 import { proposedWords } from '#libs/present/proposed-words.js';
 import { putInWords } from '#libs/present/put-in-words.js';
 import { fullLook, type Looked, quickLook } from './compute-look.js';
 import type { DeskAnswered, DeskAsked, Look, LookAsked, Trace } from './look.js';
-import { ratioRows } from './ratio-rows.js';
 import { stationCharts } from './station-charts.js';
 import { StudyCache } from './study-cache.js';
 
@@ -50,9 +49,10 @@ async function answerOf(asked: DeskAsked): Promise<DeskAnswered> {
       return { ticket, opened: true };
     case 'look':
       return { ticket, look: await look(opened(), asked.look) };
-    case 'ratios': {
-      const { study, outcome } = fullLook(opened(), await read(asked.look));
-      return { ticket, ratios: ratioRows(study, outcome) };
+    case 'firm': {
+      const { outcome } = fullLook(opened(), await read(asked.look));
+      const { assumptions, reactorTrials, robustness } = putInWords(withRobustness(outcome).result);
+      return { ticket, firm: { assumptions, reactorTrials, robustness } };
     }
     case 'warm':
       await warmUp(opened(), asked.look);

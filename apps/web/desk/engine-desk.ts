@@ -1,6 +1,6 @@
 import type { RecordSummary } from '#libs/engine/index.js';
 import { DeskLink } from './desk-link.js';
-import type { Look, LookAsked, RatioRow, Trace } from './look.js';
+import type { Firmness, Look, LookAsked, Trace } from './look.js';
 
 /** The hand has rested when nothing was asked for so long [ms]. */
 const REST_MS = 250;
@@ -8,12 +8,14 @@ const REST_MS = 250;
 /** What hears of the answers. */
 export interface DeskEars {
   looked(look: Look, asked: LookAsked, tookMs: number): void;
+  firm(firm: Firmness, asked: LookAsked): void;
   failed(error: Error): void;
 }
 
 /**
- * Two workers with the engine: one follows the hand and answers only the newest question, the other judges in full
- * once the hand rests.
+ * Workers with the engine: one follows the hand and answers only the newest question, the other judges in full
+ * once the hand rests. A third, started when it is first needed, says how
+ * firm the verdict is.
  */
 export class EngineDesk {
   readonly #near = new DeskLink();
@@ -22,12 +24,17 @@ export class EngineDesk {
   #pending: LookAsked | null = null;
   #isLooking = false;
   #isWarm = false;
+  #third: DeskLink | null = null;
+  #firmAsked: LookAsked | null = null;
+  #isFirming = false;
+  readonly #open: { ask: 'open'; columnsUrl: string; summary: RecordSummary; timeZone: string };
   #rest: ReturnType<typeof setTimeout> | undefined;
   #opening: Promise<unknown>;
 
   constructor(record: { columnsUrl: string; summary: RecordSummary; timeZone: string }, ears: DeskEars) {
     this.#ears = ears;
     const open = { ask: 'open' as const, ...record };
+    this.#open = open;
     this.#opening = Promise.all([this.#near.ask(open, 'opened'), this.#far.ask(open, 'opened')]);
     this.#opening.catch((error: Error) => ears.failed(error));
   }
@@ -53,10 +60,30 @@ export class EngineDesk {
     );
   }
 
-  /** @returns the same stages at other reactor ratios */
-  async ratios(asked: LookAsked): Promise<RatioRow[]> {
+  /** Asks how firm the verdict is; of several questions only the newest is answered. */
+  async firm(asked: LookAsked): Promise<void> {
+    this.#firmAsked = asked;
+    if (this.#isFirming) return;
+    this.#isFirming = true;
+    try {
+      this.#third ??= await this.#openThird();
+      while (this.#firmAsked !== null) {
+        const now: LookAsked = this.#firmAsked;
+        this.#firmAsked = null;
+        const firm = await this.#third.ask({ ask: 'firm', look: now }, 'firm');
+        if (this.#firmAsked === null) this.#ears.firm(firm, now);
+      }
+    } catch {
+      // The full look has said what is wrong with the inputs.
+    }
+    this.#isFirming = false;
+  }
+
+  async #openThird(): Promise<DeskLink> {
     await this.#opening;
-    return this.#far.ask({ ask: 'ratios', look: { ...asked, depth: 'full' } }, 'ratios');
+    const link = new DeskLink();
+    await link.ask(this.#open, 'opened');
+    return link;
   }
 
   /** @returns the record's own columns */
@@ -69,6 +96,7 @@ export class EngineDesk {
     clearTimeout(this.#rest);
     this.#near.close();
     this.#far.close();
+    this.#third?.close();
   }
 
   async #warmUp(asked: LookAsked): Promise<void> {

@@ -28,19 +28,8 @@ export interface LookAsked {
   depth: 'quick' | 'full';
 }
 
-/** The same stages at another reactor ratio. */
-export interface RatioRow {
-  reactorPct: number;
-  ratedV: number;
-  effectiveKvar: number;
-  tunedOrderH: number | null;
-  parallelOrderH: number | null;
-  harmonicVoltagePct: number | null;
-  capacitorVoltagePct: number | null;
-  capacitorCurrentPct: number | null;
-  verdict: Verdict;
-  isOwn: boolean;
-}
+/** How firm a verdict is: some sixty judgements, had once the hand has rested for longer. */
+export type Firmness = Pick<Result, 'assumptions' | 'reactorTrials' | 'robustness'>;
 
 /** Charts of the open station; the others' are made when they are opened. */
 export interface StationCharts {
@@ -81,7 +70,7 @@ export interface Trace {
 export type DeskAsked =
   | { ask: 'open'; ticket: number; columnsUrl: string; summary: RecordSummary; timeZone: string }
   | { ask: 'look'; ticket: number; look: LookAsked }
-  | { ask: 'ratios'; ticket: number; look: LookAsked }
+  | { ask: 'firm'; ticket: number; look: LookAsked }
   | { ask: 'warm'; ticket: number; look: LookAsked }
   | { ask: 'trace'; ticket: number };
 
@@ -89,7 +78,7 @@ export type DeskAnswered =
   | { ticket: number; opened: true }
   | { ticket: number; warm: true }
   | { ticket: number; look: Look }
-  | { ticket: number; ratios: RatioRow[] }
+  | { ticket: number; firm: Firmness }
   | { ticket: number; trace: Trace }
   | { ticket: number; problems: readonly Problem[] }
   | { ticket: number; fault: string };

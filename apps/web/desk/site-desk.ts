@@ -5,13 +5,14 @@ import type { RecordShown, RevisionHeadShown, RevisionShown, SiteShown } from '.
 import { withValueAt } from '../field/document-path.js';
 import { clockNow } from './clock-now.js';
 import { InputRefused } from './desk-link.js';
-import { type DeskState, isChanged, NOTHING_YET, studiedDocument } from './desk-state.js';
+import { type DeskState, isChanged, NOTHING_YET, staleFrom, studiedDocument } from './desk-state.js';
 import { dropDraft, keepDraft, readDraft } from './draft.js';
 import { EngineDesk } from './engine-desk.js';
 import { followJob, type JobEnd, keptJob } from './follow-job.js';
-import type { Look, LookAsked, Picks, RatioRow, Trace } from './look.js';
+import type { Firmness, Look, LookAsked, Picks, Trace } from './look.js';
+import { mergedLook } from './merged-look.js';
 
-/** How long to wait for the first plan of a site whose plan is being made elsewhere [ms]. */
+/** Wait for a first plan that is being made elsewhere [ms]. */
 const FIRST_PLAN_MS = 1500;
 
 /** Everything one site's page does: holds what is typed, asks the engine and the server, and says what came of it. */
@@ -67,10 +68,10 @@ export class SiteDesk {
 
   openStation(station: Station): void {
     this.#station = station;
-    if (this.#engine !== null) this.#look(true);
+    this.#look(true);
   }
 
-  /** A field was typed in: a value the document takes, or a text that is none yet. */
+  /** A field was typed in: a value, or a text that is none yet. */
   type(path: string, text: string, read: { value: unknown } | null): void {
     const { [path]: _, ...others } = this.#state.typed;
     if (read === null) {
@@ -90,14 +91,14 @@ export class SiteDesk {
 
   pick(picks: Partial<Picks>): void {
     this.#set({ picks: { ...this.#state.picks, ...picks } });
-    if (this.#engine !== null) this.#look(false);
+    this.#look(false);
   }
 
   /** Puts everything back to what was kept. */
   putBack(): void {
     dropDraft(this.siteId);
     this.#set({ document: this.#state.site!.site, trial: null, typed: {}, problems: [] });
-    if (this.#engine !== null) this.#look(true);
+    this.#look(true);
   }
 
   /**
@@ -136,8 +137,7 @@ export class SiteDesk {
   }
 
   async cancelJob(): Promise<void> {
-    const { job } = this.#state;
-    if (job !== null) await ask(`/api/jobs/${job.id}`, { method: 'DELETE' }).catch((error) => this.#hear(error));
+    await ask(`/api/jobs/${this.#state.job?.id}`, { method: 'DELETE' }).catch((error) => this.#hear(error));
   }
 
   /** Of two versions: the other window's is taken, or this one goes on, built on theirs. */
@@ -148,10 +148,6 @@ export class SiteDesk {
     const own = whose === 'mine' ? document : theirs.site;
     this.#set({ site: theirs, document: own, theirs: null, ...(whose === 'theirs' ? { trial: null, typed: {} } : {}) });
     this.#edited();
-  }
-
-  ratios(): Promise<RatioRow[]> {
-    return this.#engine === null ? Promise.resolve([]) : this.#engine.ratios(this.#asked());
   }
 
   trace(): Promise<Trace> | null {
@@ -188,7 +184,7 @@ export class SiteDesk {
   #lookAgain(): void {
     if (this.#closed || this.#state.job !== null || this.#state.kept !== null) return;
     this.#refresh()
-      .then(() => this.#state.kept !== null && this.#engine !== null && this.#look(true))
+      .then(() => this.#state.kept !== null && this.#look(true))
       .catch((error) => this.#hear(error));
   }
 
@@ -221,7 +217,7 @@ export class SiteDesk {
   #edited(): void {
     const { site, document, trial } = this.#state;
     keepDraft(this.siteId, { version: site!.version, document: document!, trial });
-    if (this.#engine !== null) this.#look(false);
+    this.#look(false);
   }
 
   #prepareEngine(): void {
@@ -236,6 +232,7 @@ export class SiteDesk {
     };
     this.#engine = new EngineDesk(opened, {
       looked: (look, asked, tookMs) => this.#looked(look, asked, tookMs),
+      firm: (firm, asked) => this.#firm(firm, asked),
       failed: (error) => this.#failed(error),
     });
     this.#look(true);
@@ -248,24 +245,27 @@ export class SiteDesk {
   }
 
   #look(isFullOnly: boolean): void {
-    this.#engine?.look(this.#asked(), isFullOnly);
+    if (this.#engine !== null) this.#engine.look(this.#asked(), isFullOnly);
   }
 
   #looked(look: Look, asked: LookAsked, tookMs: number): void {
-    if (look.depth === 'full') this.#full = look;
-    const full = this.#full;
-    const { bank, requirement, control, operation, verdict } = look.result;
-    const merged =
-      look.depth === 'full' || full === null
-        ? look
-        : { ...full, depth: look.depth, result: { ...full.result, bank, requirement, control, operation, verdict } };
+    if (look.depth === 'full') {
+      this.#full = look;
+      if (staleFrom(this.#state) !== null || this.#state.kept === null) void this.#engine?.firm(asked);
+    }
     this.#set({
-      look: merged,
+      look: mergedLook(look, this.#full),
       charts: { ...this.#state.charts, ...look.charts },
       fault: null,
       problems: [],
       ...(asked.depth === 'quick' ? { followedMs: tookMs } : {}),
     });
+  }
+
+  #firm(firm: Firmness, asked: LookAsked): void {
+    if (this.#full === null || JSON.stringify(asked.document) !== JSON.stringify(studiedDocument(this.#state))) return;
+    this.#full = { ...this.#full, result: { ...this.#full.result, ...firm } };
+    this.#set({ look: this.#full });
   }
 
   #failed(error: Error): void {

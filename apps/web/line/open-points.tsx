@@ -36,7 +36,7 @@ export function OpenPoints({ siteId }: { siteId: string }) {
             {result === null ? 'nothing computed' : `${points.length} open ${points.length === 1 ? 'point' : 'points'}`}
           </span>
           <span className="third caption">
-            {most > 0 ? `${deciding} could change the verdict` : 'effects not computed yet'}
+            {most > 0 ? `${deciding === 0 ? 'none' : deciding} could change the verdict` : 'effects not computed yet'}
           </span>
         </div>
         <button
@@ -131,6 +131,11 @@ function pointOf(remark: Remark): Point {
 }
 
 function rangeWords({ figure, low, high }: NonNullable<Remark['effect']>): string {
+  const duty = /^duties\.(.+)$/.exec(figure)?.[1];
+  if (duty !== undefined) {
+    const percent = { low: Math.round(100 * low), high: Math.round(100 * high) };
+    return `${duty}: ${formatRange(percent, '%')} of its limit`;
+  }
   if (/kvar$/i.test(figure)) return `± ${formatQuantity(Math.abs(high - low) / 2, 'kvar')}`;
   return formatRange({ low, high }, '', 'computed');
 }

@@ -9,6 +9,7 @@ import { Plot } from '../draw/plot.js';
 import { latestResult } from '../line/latest-result.js';
 import { NoRecord } from '../record/no-record.js';
 import { Headline } from '../working/headline.js';
+import { Firmness } from './firmness.js';
 import { MarginTable } from './margin-table.js';
 
 /** Resonance and limits: impedance over order, every level and order against its limit, duties, other ratios. */
@@ -43,7 +44,12 @@ export function NetworkSheet() {
         {headline(result, charts)}
       </Headline>
       {charts === undefined ? null : <Pictures charts={charts} />}
-      {bankOf(state) === null ? null : <RatioTable isWide />}
+      {bankOf(state) === null ? null : (
+        <>
+          <RatioTable />
+          <Firmness />
+        </>
+      )}
     </>
   );
 }
