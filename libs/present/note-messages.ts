@@ -81,6 +81,15 @@ export const NOTE_MESSAGES: Messages = {
     '{intervals:interval was|intervals were} filled by {method}, as asked.',
     'They are not measured.',
   ),
+  'channels-added': told('Channels {channels} were added up as {quantity}.'),
+  'register-fell': noted(
+    'A register fell at {readings:reading|readings}; the energy of those intervals is not known.',
+    'Ask whether the meter was reset, exchanged or ran over.',
+  ),
+  'register-readings-missing': noted(
+    'Readings of a register are missing before {readings:reading|readings}; the energy between was left out.',
+    'It belongs to no one interval.',
+  ),
   'nem12-time': told('NEM12 keeps its own time, UTC{zone}, all year.'),
   'nem12-header-missing': noted('The NEM12 header record is missing.', 'The file may have been cut.'),
   'nem12-end-missing': noted('The NEM12 end record is missing.', 'The file may have been cut.'),
