@@ -1,6 +1,6 @@
 import * as z from 'zod';
 import { METER_COLUMNS, METER_UNITS, type MeterMap } from './meter-map.js';
-import { label, quantity, whole } from './schema-parts.js';
+import { label, plain, POSITIVE, quantity, whole } from './schema-parts.js';
 import { readBySchema } from './schema-problems.js';
 import { isTimeZone } from './time-zone.js';
 
@@ -31,6 +31,8 @@ export const meterMapSchema = z
     stamp: z.enum(['begin', 'end']).optional(),
     dateOrder: z.enum(['ymd', 'dmy', 'mdy']).optional(),
     timeZone: z.string().refine(isTimeZone, { error: 'a time zone such as "Europe/Dublin" or "+10:00"' }).optional(),
+    meter: label(80).optional(),
+    multiplier: plain(POSITIVE).optional(),
     repair: z.enum(['none', 'hold', 'interpolate', 'typicalDay']).optional(),
     upToS: quantity('upToS', { min: 0 }).optional(),
     keepRow: z.enum(['first', 'last']).optional(),

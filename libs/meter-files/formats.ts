@@ -1,7 +1,9 @@
 import { readCsv } from './csv/read-csv.js';
 import type { MeterFormat } from './meter-format.js';
+import { isMscons, readMscons } from './mscons/read-mscons.js';
 import { isNem12 } from './nem12/nem12-records.js';
 import { readNem12 } from './nem12/read-nem12.js';
+import { isProfileReadout, readProfileReadout } from './profile-readout/read-profile-readout.js';
 
 /** Every format that is read, in the order in which a file is tried against them; delimited text takes what is left. */
 export const FORMATS: readonly MeterFormat[] = [
@@ -11,6 +13,28 @@ export const FORMATS: readonly MeterFormat[] = [
     described: ['AEMO, Meter Data File Format Specification NEM12 & NEM13, version 1.06, 1 December 2017'],
     recognises: isNem12,
     read: readNem12,
+  },
+  {
+    name: 'mscons',
+    title: 'MSCONS, metered services consumption report (UN/EDIFACT)',
+    described: [
+      'UN/CEFACT, United Nations Directories for EDIFACT, message MSCONS, https://service.unece.org/trade/untdid/d04b/trmd/mscons_c.htm',
+      'ISO 9735-1:2002, EDIFACT application level syntax rules',
+      'IEC 62056-61:2006, Object identification system (OBIS)',
+    ],
+    recognises: isMscons,
+    read: readMscons,
+  },
+  {
+    name: 'profile-readout',
+    title: 'Load profile P.01 or P.02 of a meter read-out',
+    described: [
+      'IEC 62056-21:2002, Direct local data exchange, data sets of the read-out',
+      'VDEW, Lastenheft Elektronische Lastgangzähler, version 2.1.2, form of the load profile P.01 (from memory)',
+      'IEC 62056-61:2006, Object identification system (OBIS)',
+    ],
+    recognises: isProfileReadout,
+    read: readProfileReadout,
   },
   {
     name: 'csv',

@@ -82,6 +82,31 @@ export const NOTE_MESSAGES: Messages = {
     'They are not measured.',
   ),
   'channels-added': told('Channels {channels} were added up as {quantity}.'),
+  'channels-left-out': told(
+    'Channels {channels} say the same in another way, or nothing a record needs, and were left out.',
+  ),
+  'meters-left-out': noted(
+    'Other meters of the file give no record by themselves and were left out: {meters}.',
+    'See that the right one was read.',
+  ),
+  'values-substituted': noted(
+    '{values:value is|values are} estimated, substituted or provisional, as the file itself says.',
+    'They are not measured.',
+  ),
+  'values-unusable': noted(
+    '{values:value is|values are} marked as unusable and were left out.',
+    'Missing is not zero; find out why.',
+  ),
+  'values-multiplied': told('All energies and powers were multiplied by {multiplier}, as asked.'),
+  'status-words': noted(
+    'The meter set a status word for {intervals:interval|intervals}.',
+    'Ask what it means: a power failure, a changed clock or a fault.',
+  ),
+  'partial-intervals-left-out': noted(
+    '{intervals:interval was|intervals were} cut short by an event of the meter and left out.',
+    'A supply failure or a changed clock explains it.',
+  ),
+  'interval-ends-by-format': told('The format stamps the end of each interval.'),
   'register-fell': noted(
     'A register fell at {readings:reading|readings}; the energy of those intervals is not known.',
     'Ask whether the meter was reset, exchanged or ran over.',
