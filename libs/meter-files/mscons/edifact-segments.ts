@@ -1,3 +1,4 @@
+import { shown } from '#libs/contract/shown.js';
 import { InputProblem } from '#libs/engine/index.js';
 import type { MeterBytes } from '../meter-bytes.js';
 
@@ -49,7 +50,10 @@ class SegmentCutter {
     if (!this.#begun && !this.#begin()) return;
     let from = 0;
     for (let to = this.#endAfter(from); to >= 0; to = this.#endAfter(from)) {
-      this.#take(segmentOf(this.#text.slice(from, to), this.#marks), ++this.#number);
+      const segment = segmentOf(this.#text.slice(from, to), this.#marks);
+      this.#number++;
+      if (!/^[A-Z]{3}$/.test(segment[0]![0]!)) refuseTag(segment[0]![0]!, this.#number);
+      this.#take(segment, this.#number);
       from = to + 1;
     }
     this.#text = this.#text.slice(from);
@@ -109,6 +113,12 @@ function firstOf(raw: string): number {
   let at = 0;
   while (raw.charCodeAt(at) === LF || raw.charCodeAt(at) === CR || raw[at] === ' ') at++;
   return at;
+}
+
+function refuseTag(tag: string, row: number): never {
+  throw new InputProblem([
+    { code: 'unreadable', row, expected: 'a segment tag of three capital letters', found: shown(tag) },
+  ]);
 }
 
 function refuseEndless(row: number): never {
