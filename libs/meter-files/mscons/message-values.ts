@@ -44,6 +44,11 @@ export class MessageValues {
   #point = '';
   #channels: Map<string, MessageChannel> | null = null;
   #code = '';
+  #inItem = false;
+  /** the item's code has been read */
+  #named = false;
+  /** the item has a value */
+  #valued = false;
   #pending: PendingValue | null = null;
 
   constructor(problems: RowProblems) {
@@ -56,16 +61,25 @@ export class MessageValues {
     this.#point = id;
     this.#channels = null;
     this.#code = '';
+    this.#inItem = false;
+    this.#named = false;
+    this.#valued = false;
   }
 
   /** Begins an item, whose identification code follows. */
   item(): void {
     this.close();
     this.#code = '';
+    this.#inItem = true;
+    this.#named = false;
+    this.#valued = false;
   }
 
-  /** Takes the identification code of the item. */
-  product(segment: Segment): void {
+  /** Takes the identification code of the item, which stands before its values. */
+  product(segment: Segment, row: number): void {
+    if (!this.#inItem || this.#valued) this.#refuseOrder(row, 'a line item (LIN) before its code (PIA)');
+    if (this.#named) return;
+    this.#named = true;
     const code = segment.slice(2).map(([id]) => id ?? '');
     this.#code = code.find((text) => text !== '') ?? '';
   }
@@ -73,6 +87,8 @@ export class MessageValues {
   /** Takes a quantity; its times follow. */
   quantity([, composite = []]: Segment, row: number): void {
     this.close();
+    if (!this.#named) this.#refuseOrder(row, 'the code of the item (PIA) before its values');
+    this.#valued = true;
     const [qualifier = '', text = '', unit = ''] = composite;
     this.values++;
     if (qualifier === UNUSABLE) this.unusable++;
@@ -95,9 +111,11 @@ export class MessageValues {
       const expected = 'a time as CCYYMMDDHHMM, with or without an offset';
       this.#problems.add({ code: 'bad-time', row, column: 2, expected, found: shown(text) });
       this.#pending = null;
-    } else if (qualifier === '163') this.#pending.begin = time;
-    else if (qualifier === '164') this.#pending.end = time;
-    else this.#pending.reading = time;
+    } else {
+      const which = qualifier === '163' ? 'begin' : qualifier === '164' ? 'end' : 'reading';
+      if (this.#pending[which] !== null) this.#refuseOrder(row, 'each time of a value once');
+      this.#pending[which] = time;
+    }
   }
 
   /** Keeps the value that is open, now that all its times are known. */
@@ -120,6 +138,10 @@ export class MessageValues {
     }
     kept.local = at.local;
     channel.add(at.timeS, pending.value, pending.row);
+  }
+
+  #refuseOrder(row: number, expected: string): never {
+    throw new InputProblem([{ code: 'unreadable', row, expected, found: 'another order of segments' }]);
   }
 
   #checkLength(channel: MeterChannel, intervalS: number, row: number): void {

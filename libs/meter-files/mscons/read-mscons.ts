@@ -55,7 +55,7 @@ function takeSegment(values: MessageValues, segment: Segment, number: number): v
       values.item();
       break;
     case 'PIA':
-      values.product(segment);
+      values.product(segment, number);
       break;
     case 'QTY':
       values.quantity(segment, number);
