@@ -11,6 +11,7 @@ const unit = z.enum(METER_UNITS);
 export const meterMapSchema = z
   .strictObject({
     format: label(40).optional(),
+    sheet: z.union([whole(1, 256), label()], { error: 'a sheet number counted from 1, or a sheet name' }).optional(),
     separator: z.enum([',', ';', '\t', '|']).optional(),
     decimal: z.enum(['.', ',']).optional(),
     headerRow: whole(0, 1000).optional(),

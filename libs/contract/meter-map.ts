@@ -45,6 +45,8 @@ export type MeterRepair = 'none' | 'hold' | 'interpolate' | 'typicalDay';
 export interface MeterMap {
   /** a row of the table of formats, for example `csv` */
   format?: string;
+  /** the sheet of a workbook: its name, or its number counted from 1 */
+  sheet?: number | string;
   separator?: ',' | ';' | '\t' | '|';
   decimal?: '.' | ',';
   /** row of the column names, counted from 1; 0 where the file has none */

@@ -4,6 +4,8 @@ import { isMscons, readMscons } from './mscons/read-mscons.js';
 import { isNem12 } from './nem12/nem12-records.js';
 import { readNem12 } from './nem12/read-nem12.js';
 import { isProfileReadout, readProfileReadout } from './profile-readout/read-profile-readout.js';
+import { isParquet, readParquet } from './parquet/read-parquet.js';
+import { isXlsx, readXlsx } from './xlsx/read-xlsx.js';
 
 /** Every format that is read, in the order in which a file is tried against them; delimited text takes what is left. */
 export const FORMATS: readonly MeterFormat[] = [
@@ -35,6 +37,20 @@ export const FORMATS: readonly MeterFormat[] = [
     ],
     recognises: isProfileReadout,
     read: readProfileReadout,
+  },
+  {
+    name: 'xlsx',
+    title: 'Workbook with a sheet of rows under a header',
+    described: ['ECMA-376 / ISO/IEC 29500-1, Office Open XML File Formats: SpreadsheetML, and part 2, Open Packaging'],
+    recognises: isXlsx,
+    read: readXlsx,
+  },
+  {
+    name: 'parquet',
+    title: 'Parquet with named columns',
+    described: ['Apache Parquet file format specification, https://parquet.apache.org/docs/file-format/'],
+    recognises: isParquet,
+    read: readParquet,
   },
   {
     name: 'csv',
