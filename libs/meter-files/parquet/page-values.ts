@@ -59,7 +59,8 @@ export function plainValues(bytes: Uint8Array, count: number, physical: Physical
   if (type === 'FIXED_LEN_BYTE_ARRAY') {
     return Array.from({ length: count }, (_, i) => bytes.subarray(i * width, (i + 1) * width));
   }
-  return typed(bytes.slice(0, count * width), type);
+  // a copy of its own, so that it begins at the beginning of its buffer
+  return typed(new Uint8Array(bytes.subarray(0, count * width)), type);
 }
 
 function typed(bytes: Uint8Array, type: string): RawValues {

@@ -32,7 +32,10 @@ export async function readSheetText(
  */
 export function readingOf(reading: MeterReading, format: string, notes: readonly Remark[]): MeterReading {
   const { record, quality } = reading;
-  return { record: { ...record, notes: [...notes, ...record.notes] }, quality: { ...quality, format } };
+  const own = record.notes.map((entry) =>
+    entry.code === 'file-read-as' ? { ...entry, values: { ...entry.values, format } } : entry,
+  );
+  return { record: { ...record, notes: [...notes, ...own] }, quality: { ...quality, format } };
 }
 
 /**
