@@ -80,6 +80,20 @@ export class ColumnPages {
     }
   }
 
+  /**
+   * Ends the column.
+   * @throws PageError where it holds more than the row group has rows
+   */
+  async end(): Promise<void> {
+    while (this.#at < this.#chunk.to) {
+      const { kind, values, packedBytes } = await this.#header();
+      if (kind === 'rows' || kind === 'rowsV2' ? values > 0 : kind === 'dictionary') {
+        throw new PageError('more values than rows');
+      }
+      this.#at += packedBytes;
+    }
+  }
+
   async #header(): Promise<PageHeader> {
     const start = await this.#file.read(this.#at, Math.min(HEADER_BYTES, this.#chunk.to - this.#at));
     const header = readPageHeader(start);

@@ -117,6 +117,9 @@ function checkGroup(group: RowGroup, index: number, { columns, dataEnd }: Footer
         `${meta.path_in_schema?.[0]}, ${meta.type ?? 'none'}`,
       );
     }
+    if (meta.num_values !== group.num_rows) {
+      throw damaged(path, `${group.num_rows} values, one a row`, String(meta.num_values));
+    }
     if (!CODECS.includes(meta.codec)) {
       const expected = `a codec that is read: ${CODECS.join(', ')}`;
       throw new InputProblem([{ code: 'not-supported-yet', path, expected, found: String(meta.codec) }]);

@@ -139,6 +139,9 @@ async function* groupRows(
     }
     left -= ready;
   }
+  for (const [index, page] of pages.entries()) {
+    if (page !== null) await inColumn(columns, { index, row: written.row + 1 }, () => page.end());
+  }
 }
 
 function chunkOf(group: Footer['groups'][number], { element, leaf }: NamedColumn, text: ValueText): ColumnChunk {

@@ -86,9 +86,10 @@ export class SheetRows implements XmlListener {
 
   #openCell({ r, t, s }: Readonly<Record<string, string>>): void {
     const before = this.#cell.column;
-    const column = r === undefined ? before + 1 : this.#columnOf(r);
     const style = s === undefined ? 0 : Number(s);
-    this.#cell = { row: this.#row, column, type: t ?? 'n', style, value: '', formula: false };
+    this.#cell = { row: this.#row, column: before + 1, type: t ?? 'n', style, value: '', formula: false };
+    if (r !== undefined) this.#cell.column = this.#columnOf(r);
+    const { column } = this.#cell;
     if (column > before && column <= MOST_COLUMNS) return;
     this.#refuse('unreadable', `a column above ${before} and at most ${MOST_COLUMNS}`, r ?? String(column));
   }
