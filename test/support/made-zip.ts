@@ -50,5 +50,5 @@ export function madeZip(parts: readonly ZipPart[], statedEntries = parts.length)
   end.writeUInt16LE(statedEntries & 0xffff, 10);
   end.writeUInt32LE(size, 12);
   end.writeUInt32LE(at, 16);
-  return Buffer.concat([...local, ...directory, end]);
+  return new Uint8Array(Buffer.concat([...local, ...directory, end]));
 }
