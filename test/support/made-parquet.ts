@@ -43,20 +43,23 @@ const PACKED: Record<string, (bytes: Uint8Array) => Uint8Array> = {
 
 type Value = Exclude<MadeColumn['values'][number], null>;
 
+const APPENDED: Record<string, (writer: ByteWriter, value: Value) => void> = {
+  DOUBLE: (writer, value) => writer.appendFloat64(value as number),
+  FLOAT: (writer, value) => writer.appendFloat32(value as number),
+  INT32: (writer, value) => writer.appendInt32(value as number),
+  INT64: (writer, value) => writer.appendInt64(BigInt(value as number)),
+  INT96: (writer, value) => writer.appendBytes(value as Uint8Array),
+  FIXED_LEN_BYTE_ARRAY: (writer, value) => writer.appendBytes(value as Uint8Array),
+  BYTE_ARRAY: (writer, value) => {
+    const bytes = typeof value === 'string' ? Buffer.from(value) : (value as Uint8Array);
+    writer.appendUint32(bytes.length);
+    writer.appendBytes(bytes);
+  },
+};
+
 function plain(type: ParquetType, values: readonly Value[]): Uint8Array {
   const writer = new ByteWriter();
-  for (const value of values) {
-    if (type === 'DOUBLE') writer.appendFloat64(value as number);
-    else if (type === 'FLOAT') writer.appendFloat32(value as number);
-    else if (type === 'INT32') writer.appendInt32(value as number);
-    else if (type === 'INT64') writer.appendInt64(BigInt(value as number));
-    else if (type === 'BOOLEAN') throw new Error('truths are written by the other writer');
-    else {
-      const bytes = typeof value === 'string' ? Buffer.from(value) : (value as Uint8Array);
-      if (type === 'BYTE_ARRAY') writer.appendUint32(bytes.length);
-      writer.appendBytes(bytes);
-    }
-  }
+  for (const value of values) APPENDED[type]!(writer, value);
   return writer.getBytes();
 }
 

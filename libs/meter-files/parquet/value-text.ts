@@ -75,15 +75,11 @@ function timeOf(element: SchemaElement, type: 'TIMESTAMP' | 'TIME'): { unit: str
 
 function stampText(unit: string, utc: boolean): ValueText {
   const zone = utc ? 'Z' : '';
-  let knownDay = Number.NaN;
-  let knownDate = '';
   return (value) => {
     const moment = split(value, unit);
     if (moment.wholeS < FIRST_S || moment.wholeS >= LAST_S) return String(value);
     const day = Math.floor(moment.wholeS / DAY_S);
-    if (day !== knownDay) knownDate = dateText(day);
-    knownDay = day;
-    return `${knownDate} ${clockText(moment.wholeS - day * DAY_S)}${moment.fraction}${zone}`;
+    return `${dateText(day)} ${clockText(moment.wholeS - day * DAY_S)}${moment.fraction}${zone}`;
   };
 }
 

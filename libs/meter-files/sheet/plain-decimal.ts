@@ -5,10 +5,10 @@ const EXPONENT = /^(\d)(?:\.(\d+))?e([+-]\d+)$/;
  * @param value finite
  */
 export function plainDecimal(value: number): string {
+  if (value === 0 || (Math.abs(value) >= 1e-6 && Math.abs(value) < 1e21)) return String(value);
   const text = String(Math.abs(value));
   const sign = value < 0 ? '-' : '';
-  const parts = EXPONENT.exec(text);
-  if (parts === null) return sign + text;
+  const parts = EXPONENT.exec(text)!;
   const digits = parts[1]! + (parts[2] ?? '');
   const point = 1 + Number(parts[3]);
   if (point <= 0) return `${sign}0.${'0'.repeat(-point)}${digits}`;

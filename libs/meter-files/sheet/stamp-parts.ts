@@ -13,10 +13,16 @@ export function clockText(clockS: number): string {
   return thousandths === 0 ? text : `${text}.${String(thousandths).padStart(3, '0')}`;
 }
 
+let knownDay = 0;
+let knownDate = '1970-01-01';
+
 /**
- * A date, year first.
+ * A date, year first. The one before is kept: rows of a day come one after the other.
  * @param day days since 1970-01-01
  */
 export function dateText(day: number): string {
-  return new Date(day * DAY_MS).toISOString().replace(/T.*$/, '');
+  if (day === knownDay) return knownDate;
+  knownDate = new Date(day * DAY_MS).toISOString().replace(/T.*$/, '');
+  knownDay = day;
+  return knownDate;
 }

@@ -10,7 +10,8 @@ export interface XmlListener {
 }
 
 const MOST_DEPTH = 64;
-const MOST_ATTRIBUTES = 128;
+/** A part that is read so far without an element beginning or ending is no workbook's [characters]. */
+const LONGEST_TAG = 262_144;
 const FORBIDDEN = /<!(?:DOCTYPE|ENTITY)/i;
 /** Longest beginning of a forbidden word that may stand at the end of a chunk. */
 const CARRIED = 9;
@@ -26,7 +27,7 @@ export class XmlPart {
   #decoder: InstanceType<typeof TextDecoder> | null = null;
   #carried = '';
   #depth = 0;
-  #attributes = 0;
+  #sinceTag = 0;
 
   /**
    * @param name of the part, for refusals
@@ -59,7 +60,9 @@ export class XmlPart {
       throw damaged(this.#name, 'XML without a document type or entities of its own', '<!DOCTYPE or <!ENTITY');
     }
     this.#carried = (this.#carried + text).slice(-CARRIED);
+    this.#sinceTag += text.length;
     this.#parser.write(text);
+    if (this.#sinceTag > LONGEST_TAG) this.#refuse(`${LONGEST_TAG} characters of one element`);
   }
 
   #listen(): void {
@@ -67,17 +70,13 @@ export class XmlPart {
     parser.onerror = (error) => {
       throw damaged(this.#name, 'well-formed XML', error.message.split('\n', 1)[0]!.toLowerCase());
     };
-    parser.onopentagstart = () => {
-      this.#attributes = 0;
-    };
-    parser.onattribute = () => {
-      if (++this.#attributes > MOST_ATTRIBUTES) this.#refuse(`${MOST_ATTRIBUTES} attributes of an element`);
-    };
     parser.onopentag = ({ name, attributes }) => {
+      this.#sinceTag = 0;
       if (++this.#depth > MOST_DEPTH) this.#refuse(`a depth of ${MOST_DEPTH} elements`);
       this.#listener.opened(local(name), attributes as Record<string, string>);
     };
     parser.onclosetag = (name) => {
+      this.#sinceTag = 0;
       this.#depth--;
       this.#listener.closed(local(name));
     };
