@@ -115,6 +115,27 @@ export const NOTE_MESSAGES: Messages = {
     'Readings of a register are missing before {readings:reading|readings}; the energy between was left out.',
     'It belongs to no one interval.',
   ),
+  'readings-questionable': noted(
+    '{readings:reading is|readings are} marked as questionable or failed a check.',
+    'They were taken as they stand.',
+  ),
+  'samples-taken-as-means': noted(
+    'Values of a moment were taken as means of their interval: {channels}.',
+    'Short peaks and lulls may be missed or overstated.',
+  ),
+  'total-flow-taken': noted(
+    'The file sums both directions of energy: {channels}. All of it was taken as imported.',
+    'Where the site exports, this is too much.',
+  ),
+  'secondary-metered': noted(
+    'The file marks {channels} as the meter’s own, secondary, values.',
+    'Ask whether ratios of instrument transformers are in them.',
+  ),
+  'xml-encoding-misdeclared': told('The file says that it is in {declared} and is in {taken}.'),
+  'espi-joined-by-order': noted(
+    '{entries:entry has|entries have} no links and were joined by their order.',
+    'See that each channel is what it says.',
+  ),
   'nem12-time': told('NEM12 keeps its own time, UTC{zone}, all year.'),
   'nem12-header-missing': noted('The NEM12 header record is missing.', 'The file may have been cut.'),
   'nem12-end-missing': noted('The NEM12 end record is missing.', 'The file may have been cut.'),

@@ -1,0 +1,158 @@
+import type { MeterMap } from '#libs/contract/meter-map.js';
+import { Question, type QuestionReading } from '#libs/contract/question.js';
+import { shown } from '#libs/contract/shown.js';
+import { InputProblem, type Problem, type Remark } from '#libs/engine/index.js';
+import { readChannels } from '../channels/read-channels.js';
+import type { MeterReading, ReadOptions } from '../meter-format.js';
+import { note } from '../note.js';
+import { shownReading } from '../record/reading-shown.js';
+import { type ChosenSeries, chooseSeries, type Series } from './choose-series.js';
+import { TOTAL_FLOWS } from './flow-schemes.js';
+import { describeType, formOf, isSample } from './reading-type.js';
+import { channelOf } from './series-moments.js';
+
+/** As many as a person can choose from. */
+const MOST_SHOWN = 20;
+const LONGEST_LIST = 300;
+
+/** The series of one meter or usage point. */
+export interface SeriesMeter {
+  name: string;
+  series: readonly Series[];
+}
+
+/** What a reader of typed readings has found in a file. */
+export interface SeriesFile {
+  format: string;
+  meters: readonly SeriesMeter[];
+  /** what stamps mark */
+  marks: 'begin' | 'end';
+  notes: readonly Remark[];
+}
+
+/**
+ * Makes a record of readings whose types are given by the code lists of IEC 61968-9.
+ * @param file meters with their series
+ * @param options of the map `meter`, `stamp`, `keepRow` and repairs matter
+ * @returns the record and its quality
+ * @throws Question where several meters could be meant, or a register could be read at either end of its interval
+ * @throws InputProblem where active or reactive energy is missing, or intervals are of several lengths
+ */
+export function readSeries(file: SeriesFile, options: ReadOptions): MeterReading {
+  const said = options.map?.meter;
+  const meters = file.meters.filter(({ series }) => series.length > 0);
+  if (said !== undefined) return readMeter(file, namedMeter(meters, said), options);
+  const [first] = meters;
+  if (first === undefined) throw new InputProblem([{ code: 'empty-file', expected: 'readings', found: 'none' }]);
+  if (meters.length === 1) return readMeter(file, first, options);
+  const readable = meters.filter((meter) => shownMeter(file, meter, { map: { keepRow: 'last' }, options }) !== null);
+  const [only] = readable;
+  if (only === undefined) return readMeter(file, first, options);
+  if (readable.length > 1) askMeter(file, readable, options);
+  const others = meters.filter((meter) => meter !== only).map(({ name }) => name);
+  const notes = [...file.notes, note('meters-left-out', { meters: listed(others) })];
+  return readMeter({ ...file, notes }, only, options);
+}
+
+function namedMeter(meters: readonly SeriesMeter[], said: string): SeriesMeter {
+  const meter = meters.find(({ name }) => name === said);
+  if (meter !== undefined) return meter;
+  const expected = `one of ${listed(meters.map(({ name }) => name))}`;
+  throw new InputProblem([{ code: 'not-found', path: 'meter', expected, found: shown(said) }]);
+}
+
+function askMeter(file: SeriesFile, meters: readonly SeriesMeter[], options: ReadOptions): never {
+  const about = `which of the ${meters.length} meters in the file is meant`;
+  const readings = meters.slice(0, MOST_SHOWN).flatMap((meter) => {
+    const reading = shownMeter(file, meter, { map: { meter: meter.name, keepRow: 'last' }, options });
+    return reading === null ? [] : [{ ...reading, map: { meter: meter.name } }];
+  });
+  throw new Question([{ id: 'meter', about, readings }]);
+}
+
+/** What would come of a meter, or null where nothing would. */
+function shownMeter(
+  file: SeriesFile,
+  meter: SeriesMeter,
+  { map, options }: { map: MeterMap; options: ReadOptions },
+): QuestionReading | null {
+  try {
+    const { record } = readMeter(file, meter, { ...options, map: { stamp: file.marks, ...options.map, ...map } });
+    return shownReading(map, record);
+  } catch (problem) {
+    if (problem instanceof InputProblem) return null;
+    throw problem;
+  }
+}
+
+function readMeter(file: SeriesFile, meter: SeriesMeter, options: ReadOptions): MeterReading {
+  const chosen = chooseSeries(meter.series);
+  refuseMissing(chosen, meter.series);
+  const said = options.map?.stamp;
+  if (said === undefined && file.marks === 'begin' && chosen.some(hasEitherEnd)) askStamp(file, meter, options);
+  const channels = chosen.map((each) => channelOf(each, { marks: file.marks, said }));
+  const rowsRead = meter.series.reduce((sum, { readings }) => sum + readings.count, 0);
+  const notes = [...file.notes, ...seriesNotes(chosen, meter.series), ...markNotes(file, chosen, said)];
+  return readChannels({ format: file.format, channels, notes, rowsRead }, options);
+}
+
+/** Whether a register's readings come with an interval and could stand at its beginning or its end. */
+function hasEitherEnd({ form, series: { readings } }: ChosenSeries): boolean {
+  return form === 'register' && readings.spanS.subarray(0, readings.count).some((spanS) => spanS > 0);
+}
+
+function askStamp(file: SeriesFile, meter: SeriesMeter, options: ReadOptions): never {
+  const about = 'whether a register was read at the beginning or at the end of the interval it is given with';
+  const readings = (['begin', 'end'] as const).flatMap((stamp) => {
+    const reading = shownMeter(file, meter, { map: { stamp, keepRow: 'last' }, options });
+    return reading === null ? [] : [{ ...reading, map: { stamp } }];
+  });
+  throw new Question([{ id: 'stamp', about, readings }]);
+}
+
+function refuseMissing(chosen: readonly ChosenSeries[], all: readonly Series[]): void {
+  const has = (...quantities: string[]) => chosen.some(({ quantity }) => quantities.includes(quantity));
+  const found = listed(all.map(({ type }) => describeType(type)));
+  const problems: Problem[] = [];
+  if (!has('active')) problems.push({ code: 'no-active-column', expected: 'active energy or power', found });
+  if (!has('lagging', 'reactive')) {
+    problems.push({ code: 'no-reactive-column', expected: 'lagging reactive energy or power', found });
+  }
+  if (problems.length > 0) throw new InputProblem(problems);
+}
+
+function seriesNotes(chosen: readonly ChosenSeries[], all: readonly Series[]): Remark[] {
+  const used = chosen.map(({ series }) => series);
+  const leftOut = all.filter((series) => !used.includes(series)).map(({ type }) => describeType(type));
+  const names = (test: (series: Series) => boolean) => used.filter(test).map(({ type }) => describeType(type));
+  const samples = names(({ type }) => formOf(type) === 'power' && isSample(type));
+  const totals = names(({ type }) => TOTAL_FLOWS.includes(type.flowDirection));
+  const secondary = names(({ type }) => type.commodity === 1);
+  const voltages = chosen.filter(({ quantity }) => quantity === 'voltage');
+  const sum = (count: 'substituted' | 'questionable') =>
+    used.reduce((total, { readings }) => total + readings.counts[count], 0);
+  const [substituted, questionable] = [sum('substituted'), sum('questionable')];
+  return [
+    ...(leftOut.length > 0 ? [note('channels-left-out', { channels: listed(leftOut) })] : []),
+    ...(samples.length > 0 ? [note('samples-taken-as-means', { channels: listed(samples) })] : []),
+    ...(totals.length > 0 ? [note('total-flow-taken', { channels: listed(totals) })] : []),
+    ...(secondary.length > 0 ? [note('secondary-metered', { channels: listed(secondary) })] : []),
+    ...(voltages.length > 0 ? [note('voltage-taken-line-to-line', { column: 'V' })] : []),
+    ...(substituted > 0 ? [note('readings-substituted', { readings: substituted })] : []),
+    ...(questionable > 0 ? [note('readings-questionable', { readings: questionable })] : []),
+  ];
+}
+
+/** Stamps that are ends because the format says so, not because each interval is written out. */
+function markNotes(file: SeriesFile, chosen: readonly ChosenSeries[], said: 'begin' | 'end' | undefined): Remark[] {
+  const open = chosen.some(
+    ({ form, series: { readings } }) =>
+      form !== 'register' && readings.spanS.subarray(0, readings.count).some((spanS) => !(spanS > 0)),
+  );
+  if (file.marks === 'begin' || said !== undefined || !open) return [];
+  return [note('stamps-mark-ends', { because: 'a value is stamped when its interval is over' })];
+}
+
+function listed(names: readonly string[]): string {
+  return [...new Set(names)].sort().join(', ').slice(0, LONGEST_LIST) || 'none';
+}
