@@ -141,8 +141,8 @@ export class CimMessage implements XmlVisitor {
     }
     const readings = this.#ofBlock;
     readings.add({ stampS: atS, spanS: endS - startS, value: missing ? Number.NaN : value, row });
-    if (substituted) readings.counts.substituted++;
-    if (questionable) readings.counts.questionable++;
+    if (substituted && !missing) readings.counts.substituted++;
+    if (questionable && !missing) readings.counts.questionable++;
   }
 
   #closeBlock(): void {
@@ -159,7 +159,7 @@ export class CimMessage implements XmlVisitor {
   }
 
   #closeMeter(): void {
-    const meter = this.#meter.mRID || this.#meter.name || this.#meter.usagePoint;
+    const meter = this.#meter.mRID || this.#meter.name || this.#meter.usagePoint || 'unnamed';
     for (const [ref, series] of this.#ofMeter) {
       const key = `${meter}\n${ref}`;
       const known = this.series.get(key);

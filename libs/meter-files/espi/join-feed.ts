@@ -104,7 +104,7 @@ function usageOf({ usagePoints }: EspiFeed, readings: readonly EspiEntry[]): Usa
     const linked = usagePoints.findIndex((point) => leadsTo(point, reading));
     const before = usagePoints.findLastIndex(({ after }) => after <= index);
     const at = linked >= 0 ? linked : Math.max(before, 0);
-    return { name: names[at] ?? '', electric: usagePoints[at]?.electric ?? true };
+    return { name: names[at] ?? 'unnamed', electric: usagePoints[at]?.electric ?? true };
   });
 }
 

@@ -45,7 +45,7 @@ export function readSeries(file: SeriesFile, options: ReadOptions): MeterReading
   const [first] = meters;
   if (first === undefined) throw new InputProblem([{ code: 'empty-file', expected: 'readings', found: 'none' }]);
   if (meters.length === 1) return readMeter(file, first, options);
-  const readable = meters.filter((meter) => shownMeter(file, meter, { map: { keepRow: 'last' }, options }) !== null);
+  const readable = meters.filter((meter) => shownMeter(file, meter, { map: {}, options }) !== null);
   const [only] = readable;
   if (only === undefined) return readMeter(file, first, options);
   if (readable.length > 1) askMeter(file, readable, options);
@@ -64,8 +64,8 @@ function namedMeter(meters: readonly SeriesMeter[], said: string): SeriesMeter {
 function askMeter(file: SeriesFile, meters: readonly SeriesMeter[], options: ReadOptions): never {
   const about = `which of the ${meters.length} meters in the file is meant`;
   const readings = meters.slice(0, MOST_SHOWN).flatMap((meter) => {
-    const reading = shownMeter(file, meter, { map: { meter: meter.name, keepRow: 'last' }, options });
-    return reading === null ? [] : [{ ...reading, map: { meter: meter.name } }];
+    const reading = shownMeter(file, meter, { map: { meter: meter.name }, options });
+    return reading === null ? [] : [reading];
   });
   throw new Question([{ id: 'meter', about, readings }]);
 }
@@ -77,7 +77,10 @@ function shownMeter(
   { map, options }: { map: MeterMap; options: ReadOptions },
 ): QuestionReading | null {
   try {
-    const { record } = readMeter(file, meter, { ...options, map: { stamp: file.marks, ...options.map, ...map } });
+    const { record } = readMeter(file, meter, {
+      ...options,
+      map: { stamp: file.marks, keepRow: 'last', ...options.map, ...map },
+    });
     return shownReading(map, record);
   } catch (problem) {
     if (problem instanceof InputProblem) return null;
@@ -104,8 +107,8 @@ function hasEitherEnd({ form, series: { readings } }: ChosenSeries): boolean {
 function askStamp(file: SeriesFile, meter: SeriesMeter, options: ReadOptions): never {
   const about = 'whether a register was read at the beginning or at the end of the interval it is given with';
   const readings = (['begin', 'end'] as const).flatMap((stamp) => {
-    const reading = shownMeter(file, meter, { map: { stamp, keepRow: 'last' }, options });
-    return reading === null ? [] : [{ ...reading, map: { stamp } }];
+    const reading = shownMeter(file, meter, { map: { stamp }, options });
+    return reading === null ? [] : [reading];
   });
   throw new Question([{ id: 'stamp', about, readings }]);
 }
@@ -123,7 +126,7 @@ function refuseMissing(chosen: readonly ChosenSeries[], all: readonly Series[]):
 
 function seriesNotes(chosen: readonly ChosenSeries[], all: readonly Series[]): Remark[] {
   const used = chosen.map(({ series }) => series);
-  const leftOut = all.filter((series) => !used.includes(series)).map(({ type }) => describeType(type));
+  const leftOut = all.filter((series) => !used.includes(series)).map(describeSeries);
   const names = (test: (series: Series) => boolean) => used.filter(test).map(({ type }) => describeType(type));
   const samples = names(({ type }) => formOf(type) === 'power' && isSample(type));
   const totals = names(({ type }) => TOTAL_FLOWS.includes(type.flowDirection));
@@ -141,6 +144,10 @@ function seriesNotes(chosen: readonly ChosenSeries[], all: readonly Series[]): R
     ...(substituted > 0 ? [note('readings-substituted', { readings: substituted })] : []),
     ...(questionable > 0 ? [note('readings-questionable', { readings: questionable })] : []),
   ];
+}
+
+function describeSeries({ type, intervalS }: Series): string {
+  return intervalS > 0 ? `${describeType(type)} of ${intervalS} s` : describeType(type);
 }
 
 /** Stamps that are ends because the format says so, not because each interval is written out. */
