@@ -8,7 +8,7 @@ import { type CimType, readCimType } from './cim-type.js';
 
 /** More channels than any file of one site has. */
 const MOST_SERIES = 2000;
-const LONGEST_NAME = 120;
+const LONGEST_NAME = 80;
 
 const BLOCKS = ['IntervalBlocks', 'IntervalBlock'];
 const INTERVALS = ['IntervalReadings', 'IntervalReading'];
@@ -148,6 +148,7 @@ export class CimMessage implements XmlVisitor {
   #closeBlock(): void {
     if (this.#ofBlock.count === 0) return;
     if (this.#type === null) {
+      this.problems.refuse();
       const found = 'none';
       throw new InputProblem([{ code: 'missing', row: this.#blockRow, expected: 'the type of the readings', found }]);
     }

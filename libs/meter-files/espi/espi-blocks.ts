@@ -54,6 +54,7 @@ export class EspiBlocks {
       }
       if (!Number.isInteger(stepS)) throw new InputProblem([mixedIntervals(row, Math.round(stepS), stepS)]);
       for (let i = 0; i < count; i++) this.readings.stampS[from + i] = startS + i * stepS;
+      this.readings.spanS.fill(stepS, from, to);
     }
   }
 
@@ -91,7 +92,7 @@ export class EspiBlockParts {
     if (name === 'IntervalReading') this.#closeReading();
     else if (parent === 'interval' && name === 'start') this.#startS = readWhole(element, EPOCH_S, problems);
     else if (parent === 'interval' && name === 'duration') this.#durationS = readWhole(element, DURATION_S, problems);
-    else if (parent === 'timePeriod' && name === 'start') this.#reading.stampS = readWhole(element, EPOCH_S, problems);
+    else if (parent === 'timePeriod' && name === 'start') this.#takeStart(element, problems);
     else if (parent === 'timePeriod' && name === 'duration')
       this.#reading.spanS = readWhole(element, DURATION_S, problems);
     else if (parent === 'IntervalReading' && name === 'value') this.#takeValue(element, problems);
@@ -100,9 +101,10 @@ export class EspiBlockParts {
   }
 
   /** Adds the block behind those of its meter reading. */
-  closeInto(blocks: EspiBlocks): void {
+  closeInto(blocks: EspiBlocks, problems: RowProblems): void {
     const { count } = this.#readings;
     if (this.#untimed > 0 && this.#untimed < count) {
+      problems.refuse();
       const expected = 'a time for each reading of a block, or for none';
       throw new InputProblem([{ code: 'bad-time', row: this.#row, expected, found: `none for ${this.#untimed}` }]);
     }
@@ -115,6 +117,11 @@ export class EspiBlockParts {
     blocks.unstated += this.#unstated;
   }
 
+  #takeStart(element: XmlElement, problems: RowProblems): void {
+    this.#reading.stampS = readWhole(element, EPOCH_S, problems);
+    this.#reading.timed = element.text !== '';
+  }
+
   #takeValue(element: XmlElement, problems: RowProblems): void {
     this.#reading.value = readDecimal(element, problems);
     this.#reading.row = element.row;
@@ -122,14 +129,23 @@ export class EspiBlockParts {
 
   #closeReading(): void {
     const reading = this.#reading;
-    if (Number.isNaN(reading.stampS)) this.#untimed++;
+    if (!reading.timed) this.#untimed++;
     if (reading.quality === null) this.#unstated++;
     else countQuality(this.#readings, reading.quality, 1);
     this.#readings.add(reading);
   }
 }
 
-function freshReading(row: number) {
-  const quality: number | null = null;
-  return { stampS: Number.NaN, spanS: Number.NaN, value: Number.NaN, row, quality: quality as number | null };
+interface OpenReading {
+  stampS: number;
+  timed: boolean;
+  spanS: number;
+  value: number;
+  row: number;
+  /** null where it states none */
+  quality: number | null;
+}
+
+function freshReading(row: number): OpenReading {
+  return { stampS: Number.NaN, timed: false, spanS: Number.NaN, value: Number.NaN, row, quality: null };
 }

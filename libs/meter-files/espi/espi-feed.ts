@@ -8,7 +8,7 @@ import { type EspiType, EspiTypeParts } from './espi-type.js';
 const MOST_ENTRIES = 1000;
 const MOST_HOMES = 50_000;
 const MOST_LINKS = 1000;
-const LONGEST_NAME = 120;
+const LONGEST_NAME = 80;
 
 /** An entry of the feed and the links by which others find it. */
 export interface EspiEntry {
@@ -103,7 +103,7 @@ export class EspiFeed implements XmlVisitor {
     const { name, parent, text } = element;
     if (name === resource) {
       this.#resource = null;
-      if (name === 'IntervalBlock') this.#block?.closeInto(this.#blocks);
+      if (name === 'IntervalBlock') this.#block?.closeInto(this.#blocks, this.problems);
       if (this.#implicit) this.#end();
     } else if (resource === 'ReadingType') this.#type?.take(element, this.problems);
     else if (resource === 'IntervalBlock') this.#block?.take(element, this.problems);

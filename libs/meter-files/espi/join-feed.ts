@@ -98,7 +98,7 @@ function usageOf({ usagePoints }: EspiFeed, readings: readonly EspiEntry[]): Usa
   const names = usagePoints.map(({ title, self }, i) => {
     return title !== '' && titles.indexOf(title) === titles.lastIndexOf(title)
       ? title
-      : (self ?? `usage point ${i + 1}`).slice(-120);
+      : (self ?? `usage point ${i + 1}`).slice(-80);
   });
   return readings.map((reading, index) => {
     const linked = usagePoints.findIndex((point) => leadsTo(point, reading));

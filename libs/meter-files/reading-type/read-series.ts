@@ -1,8 +1,8 @@
 import type { MeterMap } from '#libs/contract/meter-map.js';
-import { Question, type QuestionReading } from '#libs/contract/question.js';
-import { shown } from '#libs/contract/shown.js';
+import { Question } from '#libs/contract/question.js';
 import { InputProblem, type Problem, type Remark } from '#libs/engine/index.js';
 import { readChannels } from '../channels/read-channels.js';
+import { readMeters } from '../channels/read-meters.js';
 import type { MeterReading, ReadOptions } from '../meter-format.js';
 import { note } from '../note.js';
 import { shownReading } from '../record/reading-shown.js';
@@ -11,8 +11,6 @@ import { TOTAL_FLOWS } from './flow-schemes.js';
 import { describeType, formOf, isSample } from './reading-type.js';
 import { channelOf } from './series-moments.js';
 
-/** As many as a person can choose from. */
-const MOST_SHOWN = 20;
 const LONGEST_LIST = 300;
 
 /** The series of one meter or usage point. */
@@ -39,53 +37,8 @@ export interface SeriesFile {
  * @throws InputProblem where active or reactive energy is missing, or intervals are of several lengths
  */
 export function readSeries(file: SeriesFile, options: ReadOptions): MeterReading {
-  const said = options.map?.meter;
-  const meters = file.meters.filter(({ series }) => series.length > 0);
-  if (said !== undefined) return readMeter(file, namedMeter(meters, said), options);
-  const [first] = meters;
-  if (first === undefined) throw new InputProblem([{ code: 'empty-file', expected: 'readings', found: 'none' }]);
-  if (meters.length === 1) return readMeter(file, first, options);
-  const readable = meters.filter((meter) => shownMeter(file, meter, { map: {}, options }) !== null);
-  const [only] = readable;
-  if (only === undefined) return readMeter(file, first, options);
-  if (readable.length > 1) askMeter(file, readable, options);
-  const others = meters.filter((meter) => meter !== only).map(({ name }) => name);
-  const notes = [...file.notes, note('meters-left-out', { meters: listed(others) })];
-  return readMeter({ ...file, notes }, only, options);
-}
-
-function namedMeter(meters: readonly SeriesMeter[], said: string): SeriesMeter {
-  const meter = meters.find(({ name }) => name === said);
-  if (meter !== undefined) return meter;
-  const expected = `one of ${listed(meters.map(({ name }) => name))}`;
-  throw new InputProblem([{ code: 'not-found', path: 'meter', expected, found: shown(said) }]);
-}
-
-function askMeter(file: SeriesFile, meters: readonly SeriesMeter[], options: ReadOptions): never {
-  const about = `which of the ${meters.length} meters in the file is meant`;
-  const readings = meters.slice(0, MOST_SHOWN).flatMap((meter) => {
-    const reading = shownMeter(file, meter, { map: { meter: meter.name }, options });
-    return reading === null ? [] : [reading];
-  });
-  throw new Question([{ id: 'meter', about, readings }]);
-}
-
-/** What would come of a meter, or null where nothing would. */
-function shownMeter(
-  file: SeriesFile,
-  meter: SeriesMeter,
-  { map, options }: { map: MeterMap; options: ReadOptions },
-): QuestionReading | null {
-  try {
-    const { record } = readMeter(file, meter, {
-      ...options,
-      map: { stamp: file.marks, keepRow: 'last', ...options.map, ...map },
-    });
-    return shownReading(map, record);
-  } catch (problem) {
-    if (problem instanceof InputProblem) return null;
-    throw problem;
-  }
+  const meters = new Map(file.meters.filter(({ series }) => series.length > 0).map((meter) => [meter.name, meter]));
+  return readMeters(meters, options, (meter, said) => readMeter(file, meter, said));
 }
 
 function readMeter(file: SeriesFile, meter: SeriesMeter, options: ReadOptions): MeterReading {
@@ -106,9 +59,9 @@ function hasEitherEnd({ form, series: { readings } }: ChosenSeries): boolean {
 
 function askStamp(file: SeriesFile, meter: SeriesMeter, options: ReadOptions): never {
   const about = 'whether a register was read at the beginning or at the end of the interval it is given with';
-  const readings = (['begin', 'end'] as const).flatMap((stamp) => {
-    const reading = shownMeter(file, meter, { map: { stamp }, options });
-    return reading === null ? [] : [reading];
+  const readings = (['begin', 'end'] as const).map((stamp) => {
+    const map: MeterMap = { keepRow: 'last', ...options.map, stamp };
+    return shownReading({ stamp }, readMeter(file, meter, { ...options, map }).record);
   });
   throw new Question([{ id: 'stamp', about, readings }]);
 }
@@ -141,7 +94,7 @@ function seriesNotes(chosen: readonly ChosenSeries[], all: readonly Series[]): R
     ...(totals.length > 0 ? [note('total-flow-taken', { channels: listed(totals) })] : []),
     ...(secondary.length > 0 ? [note('secondary-metered', { channels: listed(secondary) })] : []),
     ...(voltages.length > 0 ? [note('voltage-taken-line-to-line', { column: 'V' })] : []),
-    ...(substituted > 0 ? [note('readings-substituted', { readings: substituted })] : []),
+    ...(substituted > 0 ? [note('values-substituted', { values: substituted })] : []),
     ...(questionable > 0 ? [note('readings-questionable', { readings: questionable })] : []),
   ];
 }
@@ -157,7 +110,7 @@ function markNotes(file: SeriesFile, chosen: readonly ChosenSeries[], said: 'beg
       form !== 'register' && readings.spanS.subarray(0, readings.count).some((spanS) => !(spanS > 0)),
   );
   if (file.marks === 'begin' || said !== undefined || !open) return [];
-  return [note('stamps-mark-ends', { because: 'a value is stamped when its interval is over' })];
+  return [note('interval-ends-by-format', {})];
 }
 
 function listed(names: readonly string[]): string {
