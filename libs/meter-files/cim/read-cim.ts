@@ -27,7 +27,7 @@ export function isCim(head: Uint8Array): boolean {
  * Reads a MeterReadings message. Stamps without an offset are of the zone that is said.
  * A value is stamped when its interval is over, since it tells what went by; a timePeriod decides where there is one.
  * @param source the file
- * @param options of the map `meter`, `stamp`, `timeZone`, `keepRow` and repairs matter
+ * @param options of the map `meter`, `stamp`, `multiplier`, `timeZone`, `keepRow` and repairs matter
  * @returns the record and its quality
  * @throws InputProblem where it can't be read, naming row and column
  * @throws Question where it can be read in several ways

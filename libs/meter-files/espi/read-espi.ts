@@ -19,7 +19,7 @@ export function isEspi(head: Uint8Array): boolean {
 /**
  * Reads an ESPI (Green Button) feed. Its times are seconds since 1970 in UTC, whatever zone is said.
  * @param source the file
- * @param options of the map `meter`, `stamp`, `keepRow` and repairs matter
+ * @param options of the map `meter`, `stamp`, `multiplier`, `keepRow` and repairs matter
  * @returns the record and its quality
  * @throws InputProblem where it can't be read, naming row and column
  * @throws Question where it can be read in several ways

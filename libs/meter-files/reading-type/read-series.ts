@@ -31,7 +31,7 @@ export interface SeriesFile {
 /**
  * Makes a record of readings whose types are given by the code lists of IEC 61968-9.
  * @param file meters with their series
- * @param options of the map `meter`, `stamp`, `keepRow` and repairs matter
+ * @param options of the map `meter`, `stamp`, `multiplier`, `keepRow` and repairs matter
  * @returns the record and its quality
  * @throws Question where several meters could be meant, or a register could be read at either end of its interval
  * @throws InputProblem where active or reactive energy is missing, or intervals are of several lengths
@@ -46,9 +46,11 @@ function readMeter(file: SeriesFile, meter: SeriesMeter, options: ReadOptions): 
   refuseMissing(chosen, meter.series);
   const said = options.map?.stamp;
   if (said === undefined && file.marks === 'begin' && chosen.some(hasEitherEnd)) askStamp(file, meter, options);
-  const channels = chosen.map((each) => channelOf(each, { marks: file.marks, said }));
+  const multiplier = options.map?.multiplier ?? 1;
+  const channels = chosen.map((each) => channelOf(each, { marks: file.marks, said }, multiplier));
   const rowsRead = meter.series.reduce((sum, { readings }) => sum + readings.count, 0);
   const notes = [...file.notes, ...seriesNotes(chosen, meter.series), ...markNotes(file, chosen, said)];
+  if (multiplier !== 1) notes.push(note('values-multiplied', { multiplier }));
   return readChannels({ format: file.format, channels, notes, rowsRead }, options);
 }
 

@@ -45,9 +45,11 @@ function commonestStepS(stampS: Float64Array): number {
  * Turns a series into a channel.
  * @param chosen the series and what it is to the record
  * @param stamps what they mark
+ * @param multiplier ratio of instrument transformers that is not in the values yet, 1 where there is none
  * @throws InputProblem where intervals are of several lengths
  */
-export function channelOf({ series, quantity, form, negative }: ChosenSeries, stamps: StampMarks): MeterChannel {
+export function channelOf(chosen: ChosenSeries, stamps: StampMarks, multiplier: number): MeterChannel {
+  const { series, quantity, form, negative } = chosen;
   const { readings, type, intervalS } = series;
   const kilo = type.unit === 29 ? type.power : type.power - 3;
   const channel = new MeterChannel({
@@ -55,7 +57,7 @@ export function channelOf({ series, quantity, form, negative }: ChosenSeries, st
     quantity,
     energy: form !== 'power',
     cumulative: form === 'register',
-    times: (negative ? -1 : 1) * (kilo > 0 ? 10 ** kilo : 1),
+    times: (negative ? -1 : 1) * (kilo > 0 ? 10 ** kilo : 1) * (quantity === 'voltage' ? 1 : multiplier),
     over: kilo < 0 ? 10 ** -kilo : 1,
   });
   if (form !== 'register') {

@@ -581,6 +581,7 @@ describe('the notes of the table', () => {
       {},
       { siteTimeZone: 'Europe/Berlin' },
       { map: { keepRow: 'last', repair: 'hold', upToS: 1800 } },
+      { map: { multiplier: 40 } },
     ] as const;
     const files = [...names.map((name) => readFileSync(`${folder}${name}`)), utf16];
     const codes = await Promise.all(files.flatMap((file) => options.map((option) => raisedCodes(file, option))));
