@@ -66,7 +66,7 @@ export interface MeterMap {
   dateOrder?: 'ymd' | 'dmy' | 'mdy';
   /** IANA name or fixed offset the stamps are in */
   timeZone?: string;
-  /** number of the meter that is meant, where the file holds several */
+  /** number or name of the meter that is meant, where the file holds several */
   meter?: string;
   /** ratio of the instrument transformers that the file's values still have to be multiplied by */
   multiplier?: number;

@@ -1,4 +1,6 @@
+import { isCim, readCim } from './cim/read-cim.js';
 import { readCsv } from './csv/read-csv.js';
+import { isEspi, readEspi } from './espi/read-espi.js';
 import type { MeterFormat } from './meter-format.js';
 import { isMscons, readMscons } from './mscons/read-mscons.js';
 import { isNem12 } from './nem12/nem12-records.js';
@@ -6,6 +8,7 @@ import { readNem12 } from './nem12/read-nem12.js';
 import { isProfileReadout, readProfileReadout } from './profile-readout/read-profile-readout.js';
 import { isParquet, readParquet } from './parquet/read-parquet.js';
 import { isXlsx, readXlsx } from './xlsx/read-xlsx.js';
+import { xmlStart } from './xml/xml-start.js';
 
 /** Every format that is read, in the order in which a file is tried against them; delimited text takes what is left. */
 export const FORMATS: readonly MeterFormat[] = [
@@ -53,13 +56,32 @@ export const FORMATS: readonly MeterFormat[] = [
     read: readParquet,
   },
   {
+    name: 'cim-meter-readings',
+    title: 'MeterReadings message of the Common Information Model',
+    described: [
+      'IEC 61968-9:2013, Interfaces for meter reading and control; its code lists as the CIM17 class model prints them, the order of the 18 codes from memory',
+    ],
+    recognises: isCim,
+    read: readCim,
+  },
+  {
+    name: 'espi',
+    title: 'ESPI (Green Button) feed of usage data',
+    described: [
+      'NAESB REQ.21, Energy Services Provider Interface, schema espi.xsd, version 4.0, 13 December 2023; forms of 1.1 to 3.3 from memory',
+      'RFC 4287, The Atom Syndication Format, https://www.rfc-editor.org/rfc/rfc4287',
+    ],
+    recognises: isEspi,
+    read: readEspi,
+  },
+  {
     name: 'csv',
     title: 'Delimited text with a header row',
     described: [
       'RFC 4180, Common Format and MIME Type for Comma-Separated Values (CSV) Files, https://www.rfc-editor.org/rfc/rfc4180',
       'ISO 8601-1:2019, Date and time',
     ],
-    recognises: (head) => !head.subarray(0, 512).includes(0),
+    recognises: (head) => !head.subarray(0, 512).includes(0) && xmlStart(head) === '',
     read: readCsv,
   },
 ];

@@ -118,6 +118,27 @@ export const NOTE_MESSAGES: Messages = {
   'sheet-read': told('The record stands in the sheet {sheet}, one of {sheets}.'),
   'sheets-hidden': noted('The workbook hides: {sheets}.', 'See that the sheet that was read is the one that is meant.'),
   'parquet-columns-left-out': told('Columns of lists or of types that hold no reading were left out: {columns}.'),
+  'readings-questionable': noted(
+    '{readings:reading is|readings are} marked as questionable or failed a check.',
+    'They were taken as they stand.',
+  ),
+  'samples-taken-as-means': noted(
+    'Values of a moment were taken as means of their interval: {channels}.',
+    'Short peaks and lulls may be missed or overstated.',
+  ),
+  'total-flow-taken': noted(
+    'The file sums both directions of energy: {channels}. All of it was taken as imported.',
+    'Where the site exports, this is too much.',
+  ),
+  'secondary-metered': noted(
+    'The file marks {channels} as the meter’s own, secondary, values.',
+    'Ask whether ratios of instrument transformers are in them.',
+  ),
+  'xml-encoding-misdeclared': told('The file says that it is in {declared} and is in {taken}.'),
+  'espi-joined-by-order': noted(
+    '{entries:entry has|entries have} no links and were joined by their order.',
+    'See that each channel is what it says.',
+  ),
   'nem12-time': told('NEM12 keeps its own time, UTC{zone}, all year.'),
   'nem12-header-missing': noted('The NEM12 header record is missing.', 'The file may have been cut.'),
   'nem12-end-missing': noted('The NEM12 end record is missing.', 'The file may have been cut.'),

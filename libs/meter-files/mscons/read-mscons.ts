@@ -1,6 +1,6 @@
 import { zoneTable } from '#libs/contract/time-zone.js';
 import { InputProblem, type Remark } from '#libs/engine/index.js';
-import type { ChannelFile } from '../channels/read-channels.js';
+import { type ChannelFile, readChannels } from '../channels/read-channels.js';
 import { readMeters } from '../channels/read-meters.js';
 import type { MeterBytes } from '../meter-bytes.js';
 import type { MeterReading, ReadOptions } from '../meter-format.js';
@@ -43,7 +43,7 @@ export async function readMscons(source: MeterBytes, options: ReadOptions): Prom
   problems.refuse();
   const meters = new Map<string, ChannelFile>();
   for (const [point, channels] of values.points) meters.set(point, fileOf(channels, values, options));
-  return readMeters(meters, options);
+  return readMeters(meters, options, readChannels);
 }
 
 function takeSegment(values: MessageValues, segment: Segment, number: number): void {

@@ -2,7 +2,7 @@ import { Question } from '#libs/contract/question.js';
 import { zoneTable } from '#libs/contract/time-zone.js';
 import { InputProblem, type Remark, type ZoneTable } from '#libs/engine/index.js';
 import { MeterChannel } from '../channels/meter-channel.js';
-import type { ChannelFile } from '../channels/read-channels.js';
+import { type ChannelFile, readChannels } from '../channels/read-channels.js';
 import { readMeters } from '../channels/read-meters.js';
 import { RowBuffer } from '../csv/row-buffer.js';
 import type { MeterBytes } from '../meter-bytes.js';
@@ -79,7 +79,7 @@ function readUnder(readouts: readonly Readout[], options: ReadOptions, multiplie
   for (const { meter, stretches } of readouts) meters.set(meter, [...(meters.get(meter) ?? []), ...stretches]);
   const files = new Map<string, ChannelFile>();
   for (const [meter, stretches] of meters) files.set(meter, fileOf(stretches, options, multiplier));
-  return readMeters(files, options);
+  return readMeters(files, options, readChannels);
 }
 
 function fileOf(stretches: readonly Stretch[], options: ReadOptions, multiplier: number): ChannelFile {
