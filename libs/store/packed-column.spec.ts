@@ -2,12 +2,18 @@ import { deflateRawSync } from 'node:zlib';
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { runs, SEED } from '../../test/support/soak.js';
-import { type PackedColumn, packColumn, unpackColumn } from './packed-column.js';
+import { type PackedColumn, packColumn, unpackColumnInto } from './packed-column.js';
 
 const NAME = 'activeKw 2025-01';
 
 /** Bits, so that 0 and −0 are told apart, and one NaN from another. */
 const bits = (values: Float64Array) => Array.from(new BigUint64Array(values.slice().buffer));
+function unpackColumn(packed: PackedColumn, name: string): Float64Array {
+  const column = new Float64Array(packed.intervals);
+  unpackColumnInto(packed, name, column);
+  return column;
+}
+
 const backFrom = (values: Float64Array) => unpackColumn(packColumn(values, NAME), NAME);
 
 /** The first form, as records of earlier versions hold it: 32-bit differences or floats, shuffled and deflated. */

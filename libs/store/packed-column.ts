@@ -24,6 +24,11 @@ const RESERVED_BLOCK = 0b110;
 const SEAL_BYTES = 16;
 const HEAD_BYTES = 2 + SEAL_BYTES;
 
+/** So many values tell whether a scale is worth trying on all. */
+const FIRST_VALUES = 64;
+/** zlib asks for more room where the last byte of the room it has is used. */
+const SPARE_BYTES = 64;
+
 /** Neighbours rarely share more than runs of equal bytes: looking for nothing else is three times as fast and no larger. */
 const DEFLATE = { level: 1, strategy: constants.Z_RLE };
 
@@ -35,58 +40,36 @@ const DEFLATE = { level: 1, strategy: constants.Z_RLE };
  */
 export function packColumn(values: Float64Array, name: string): PackedColumn {
   for (const scale of SCALES) {
-    const differences = differencesOf(values, scale);
-    if (differences === null) continue;
+    const planes = isWhole(values.subarray(0, FIRST_VALUES), scale) ? differencePlanes(values, scale) : null;
+    if (planes === null) continue;
     const facts = { intervals: values.length, scale, firstScaled: Math.round(values[0]! * scale) };
-    return { ...facts, bytes: sealed(planesOf(differences), facts, name) };
+    return { ...facts, bytes: sealed(planes, facts, name) };
   }
   const facts = { intervals: values.length, scale: null, firstScaled: 0 };
   return { ...facts, bytes: sealed({ bytes: shuffled(values), planes: 8 }, facts, name) };
 }
 
 /**
- * The values that were packed, to the bit; columns of the first form are read too.
+ * Puts the values that were packed into a column, to the bit; columns of the first form are read too.
  * @param packed what was stored
  * @param name as it was packed under
+ * @param column takes the values; as long as they are
  * @throws Error where the bytes are not what was packed
  */
-export function unpackColumn(packed: PackedColumn, name: string): Float64Array {
-  const { bytes, intervals, scale, firstScaled } = packed;
+export function unpackColumnInto(packed: PackedColumn, name: string, column: Float64Array): void {
+  const { bytes, intervals, scale } = packed;
+  if (column.length !== intervals) throw new Error(`${intervals} values do not go into a column of ${column.length}`);
   const count = scale === null ? intervals : intervals - 1;
-  if ((bytes[0]! & RESERVED_BLOCK) !== RESERVED_BLOCK) {
-    const width = scale === null ? 8 : 4;
-    const raw = inflated(bytes, count * width);
-    if (scale === null) return floatsFrom(raw, count);
-    return summed(numbersFrom(raw, count, width), firstScaled, scale);
-  }
-  if (bytes[0] !== SECOND_FORM) throw new Error(`a packed column has the unknown form ${bytes[0]}`);
-  const deflated = bytes.subarray(HEAD_BYTES);
-  if (!sealOf(deflated, packed, name).equals(bytes.subarray(2, HEAD_BYTES))) {
-    throw new Error(`the stored column ${name} is damaged: its hash is another one`);
-  }
-  const planes = bytes[1]!;
+  const isFirstForm = (bytes[0]! & RESERVED_BLOCK) !== RESERVED_BLOCK;
+  const deflated = isFirstForm ? bytes : unsealed(packed, name);
+  const planes = isFirstForm ? (scale === null ? 8 : 4) : bytes[1]!;
   const raw = inflated(deflated, count * planes);
-  if (scale === null) return floatsFrom(raw, count);
-  const differences = numbersFrom(raw, count, planes);
-  for (let i = 0; i < count; i++) differences[i] = (differences[i]! >>> 1) ^ -(differences[i]! & 1);
-  return summed(differences, firstScaled, scale);
+  if (scale === null) unshuffleInto(raw, column);
+  else sumInto(column, raw, { ...packed, scale, planes, signedLowest: !isFirstForm });
 }
 
-/** Differences of the scaled integers, the sign in the lowest bit; null where a value would not come back to the bit. */
-function differencesOf(values: Float64Array, scale: number): Int32Array | null {
-  const differences = new Int32Array(values.length - 1);
-  let previous = 0;
-  for (let i = 0; i < values.length; i++) {
-    const value = values[i]!;
-    const scaled = Math.round(value * scale);
-    if (scaled / scale !== value || !Number.isSafeInteger(scaled) || Object.is(value, -0)) return null;
-    const difference = scaled - previous;
-    previous = scaled;
-    if (i === 0) continue;
-    if (Math.abs(difference) > LARGEST_DIFFERENCE) return null;
-    differences[i - 1] = (difference << 1) ^ (difference >> 31);
-  }
-  return differences;
+function isWhole(values: Float64Array, scale: number): boolean {
+  return values.every((value) => Math.round(value * scale) / scale === value);
 }
 
 interface Planes {
@@ -94,17 +77,33 @@ interface Planes {
   planes: number;
 }
 
-/** The lowest bytes of all, then the next higher, as far as any of them is not 0. */
-function planesOf(differences: Int32Array): Planes {
-  const count = differences.length;
+/**
+ * Differences of the scaled integers, the sign in the lowest bit: first the lowest byte of all, then the next higher, as
+ * far as any is not 0. Null where a value would not come back to the bit.
+ */
+function differencePlanes(values: Float64Array, scale: number): Planes | null {
+  const count = values.length - 1;
+  const bytes = new Uint8Array(4 * count);
+  let previous = 0;
   let any = 0;
-  for (let i = 0; i < count; i++) any |= differences[i]!;
-  const planes = Math.ceil((32 - Math.clz32(any)) / 8);
-  const bytes = new Uint8Array(planes * count);
-  for (let plane = 0; plane < planes; plane++) {
-    for (let i = 0; i < count; i++) bytes[plane * count + i] = differences[i]! >>> (8 * plane);
+  for (let i = 0; i <= count; i++) {
+    const value = values[i]!;
+    const scaled = Math.round(value * scale);
+    if (scaled / scale !== value || (value === 0 && Object.is(value, -0))) return null;
+    if (!(Math.abs(scaled) <= Number.MAX_SAFE_INTEGER)) return null;
+    const difference = scaled - previous;
+    previous = scaled;
+    if (i === 0) continue;
+    if (!(Math.abs(difference) <= LARGEST_DIFFERENCE)) return null;
+    const bits = (difference << 1) ^ (difference >> 31);
+    any |= bits;
+    bytes[i - 1] = bits;
+    bytes[count + i - 1] = bits >>> 8;
+    bytes[2 * count + i - 1] = bits >>> 16;
+    bytes[3 * count + i - 1] = bits >>> 24;
   }
-  return { bytes, planes };
+  const planes = Math.ceil((32 - Math.clz32(any)) / 8);
+  return { bytes: bytes.subarray(0, planes * count), planes };
 }
 
 function shuffled(values: Float64Array): Uint8Array {
@@ -117,46 +116,59 @@ function shuffled(values: Float64Array): Uint8Array {
   return bytes;
 }
 
-function sealed({ bytes, planes }: Planes, facts: Omit<PackedColumn, 'bytes'>, name: string): Buffer {
-  const deflated = deflateRawSync(bytes, DEFLATE);
-  return Buffer.concat([Uint8Array.of(SECOND_FORM, planes), sealOf(deflated, facts, name), deflated]);
+type Facts = Omit<PackedColumn, 'bytes'>;
+
+function sealed({ bytes, planes }: Planes, facts: Facts, name: string): Buffer {
+  const deflated = deflateRawSync(bytes, { ...DEFLATE, chunkSize: bytes.length + SPARE_BYTES });
+  return Buffer.concat([Uint8Array.of(SECOND_FORM, planes), sealOf(deflated, planes, { ...facts, name }), deflated]);
+}
+
+function unsealed(packed: PackedColumn, name: string): Uint8Array {
+  const { bytes, intervals, scale, firstScaled } = packed;
+  if (bytes[0] !== SECOND_FORM) throw new Error(`a packed column has the unknown form ${bytes[0]}`);
+  const deflated = bytes.subarray(HEAD_BYTES);
+  const seal = sealOf(deflated, bytes[1]!, { intervals, scale, firstScaled, name });
+  if (seal.equals(bytes.subarray(2, HEAD_BYTES))) return deflated;
+  throw new Error(`the stored column ${name} is damaged: its hash is another one`);
 }
 
 /** SHA-256 of what is stored and of all that is needed to read it, its first half. */
-function sealOf(deflated: Uint8Array, { intervals, scale, firstScaled }: Omit<PackedColumn, 'bytes'>, name: string) {
-  const facts = JSON.stringify([name, intervals, scale, firstScaled]);
-  return createHash('sha256').update(facts).update(deflated).digest().subarray(0, SEAL_BYTES);
+function sealOf(deflated: Uint8Array, planes: number, facts: Facts & { name: string }): Buffer {
+  const { name, intervals, scale, firstScaled } = facts;
+  const head = JSON.stringify([name, intervals, scale, firstScaled, planes]);
+  return createHash('sha256').update(head).update(deflated).digest().subarray(0, SEAL_BYTES);
 }
 
 function inflated(deflated: Uint8Array, length: number): Uint8Array {
-  const raw = inflateRawSync(deflated, { maxOutputLength: Math.max(1, length) });
+  const raw = inflateRawSync(deflated, { maxOutputLength: Math.max(1, length), chunkSize: length + SPARE_BYTES });
   if (raw.length !== length) throw new Error(`a packed column holds ${raw.length} bytes, not ${length}`);
   return raw;
 }
 
-function numbersFrom(raw: Uint8Array, count: number, planes: number): Int32Array {
-  const numbers = new Int32Array(count);
-  for (let plane = 0; plane < planes; plane++) {
-    for (let i = 0; i < count; i++) numbers[i]! |= raw[plane * count + i]! << (8 * plane);
-  }
-  return numbers;
-}
-
-function floatsFrom(raw: Uint8Array, count: number): Float64Array {
-  const bytes = new Uint8Array(raw.length);
+function unshuffleInto(raw: Uint8Array, column: Float64Array): void {
+  const count = column.length;
+  const bytes = new Uint8Array(column.buffer, column.byteOffset, column.byteLength);
   for (let byte = 0; byte < 8; byte++) {
     for (let i = 0; i < count; i++) bytes[i * 8 + byte] = raw[byte * count + i]!;
   }
-  return new Float64Array(bytes.buffer);
 }
 
-function summed(differences: Int32Array, firstScaled: number, scale: number): Float64Array {
-  const values = new Float64Array(differences.length + 1);
+interface Summands {
+  scale: number;
+  firstScaled: number;
+  planes: number;
+  /** whether the sign stands in the lowest bit, or in the highest */
+  signedLowest: boolean;
+}
+
+function sumInto(column: Float64Array, raw: Uint8Array, { scale, firstScaled, planes, signedLowest }: Summands): void {
+  const count = column.length - 1;
   let scaled = firstScaled;
-  values[0] = scaled / scale;
-  for (let i = 0; i < differences.length; i++) {
-    scaled += differences[i]!;
-    values[i + 1] = scaled / scale;
+  column[0] = scaled / scale;
+  for (let i = 0; i < count; i++) {
+    let bits = 0;
+    for (let plane = 0; plane < planes; plane++) bits |= raw[plane * count + i]! << (8 * plane);
+    scaled += signedLowest ? (bits >>> 1) ^ -(bits & 1) : bits;
+    column[i + 1] = scaled / scale;
   }
-  return values;
 }

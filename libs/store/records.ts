@@ -1,7 +1,7 @@
 import type { EntityManager } from 'typeorm';
 import { createLoadRecord, type LoadRecord } from '#libs/engine/index.js';
 import { columnName, type MonthColumn, packRecord, type RequiredColumn } from './pack-record.js';
-import { unpackColumn } from './packed-column.js';
+import { unpackColumnInto } from './packed-column.js';
 import { RecordColumn } from './record-column.js';
 import { StoredRecord } from './stored-record.js';
 
@@ -85,7 +85,7 @@ function joined(months: RecordColumn[], intervals: number, quantity: string): Fl
   let at = 0;
   for (const month of months) {
     if (at + month.intervals > intervals) throw new Error(`column ${quantity} holds more than ${intervals} values`);
-    values.set(unpackColumn(month, columnName(month)), at);
+    unpackColumnInto(month, columnName(month), values.subarray(at, at + month.intervals));
     at += month.intervals;
   }
   if (at !== intervals) throw new Error(`column ${quantity} holds ${at} values, not ${intervals}`);
