@@ -25,6 +25,8 @@ export interface QuantitySource {
   over: number;
   /** column of the file, counted from 1; 0 where the format has none */
   column: number;
+  /** whether nobody needs the values afterwards, so that they may be turned into the record's own in place */
+  spare?: boolean;
 }
 
 /** The columns of a record, one entry a valid interval, in time order. */
@@ -76,6 +78,7 @@ export function buildColumns(
   leadingPositive = false,
 ): BuiltColumns {
   const valid = validRows(rows.kept, sources);
+  refuseNegative(rows, valid, sources);
   const n = valid.length;
   const of = (quantity: Quantity) =>
     taken(
@@ -85,13 +88,13 @@ export function buildColumns(
     );
   const exported = of('exported');
   const imported = of('active') ?? new Float64Array(n);
-  const activeKw = exported === null ? imported : lessBy(imported, exported);
+  if (exported !== null) for (let i = 0; i < n; i++) exported[i] = imported[i]! - exported[i]!;
+  const activeKw = exported ?? imported;
   const signed = of('reactive');
   const lagging = (signed === null ? of('lagging') : null) ?? new Float64Array(n);
   const leading = (signed === null ? of('leading') : null) ?? new Float64Array(n);
   const negativeReactive = signed === null ? 0 : split(signed, lagging, leading, leadingPositive);
   const standby = of('standby');
-  refuseNegative(rows, valid, sources);
   const columns: RecordColumns = {
     intervalS: rows.intervalS,
     beginS: beginnings(rows, valid),
@@ -131,12 +134,6 @@ function beginnings({ utcS, shiftS }: OrderedRows, valid: Int32Array): Float64Ar
   return beginS;
 }
 
-function lessBy(column: Float64Array, other: Float64Array): Float64Array {
-  const rest = new Float64Array(column.length);
-  for (let i = 0; i < rest.length; i++) rest[i] = column[i]! - other[i]!;
-  return rest;
-}
-
 /** More room than this behind the values of a column is not worth keeping for the sake of a copy saved. */
 const MOST_ROOM = 1.1;
 
@@ -156,16 +153,17 @@ function isEveryRow(valid: Int32Array, rows: number): boolean {
 
 function taken(rows: OrderedRows, valid: Int32Array, source: QuantitySource | undefined): Float64Array | null {
   if (source === undefined) return null;
-  const { values, times, over, energy } = source;
+  const { values, times, over, energy, quantity } = source;
   const { intervalS } = rows;
-  if (times === 1 && over === 1 && !energy) return picked(values, valid);
+  const whole = picked(values, valid);
+  // what is exported is written to
+  const isOwn = whole !== values || source.spare === true;
+  if (times === 1 && over === 1 && !energy && (isOwn || quantity !== 'exported')) return whole;
   // kW = kWh · 3600 ÷ intervalS
   const hourS = energy ? 3600 : 1;
   const lengthS = energy ? intervalS : 1;
-  const column = new Float64Array(valid.length);
-  for (let i = 0; i < column.length; i++) {
-    column[i] = (((values[valid[i]!]! * times) / over) * hourS) / lengthS;
-  }
+  const column = isOwn ? whole : new Float64Array(valid.length);
+  for (let i = 0; i < column.length; i++) column[i] = (((whole[i]! * times) / over) * hourS) / lengthS;
   return column;
 }
 
