@@ -1,6 +1,6 @@
-import { deflateRawSync } from 'node:zlib';
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
+import { firstForm } from '../../test/support/first-form.js';
 import { runs, SEED } from '../../test/support/soak.js';
 import { type PackedColumn, packColumn, unpackColumnInto } from './packed-column.js';
 
@@ -15,17 +15,6 @@ function unpackColumn(packed: PackedColumn, name: string): Float64Array {
 }
 
 const backFrom = (values: Float64Array) => unpackColumn(packColumn(values, NAME), NAME);
-
-/** The first form, as records of earlier versions hold it: 32-bit differences or floats, shuffled and deflated. */
-function firstForm(values: Float64Array, scale: number | null): PackedColumn {
-  const scaled = Array.from(values, (value) => Math.round(value * (scale ?? 1)));
-  const raw = scale === null ? values.slice() : Int32Array.from(scaled.slice(1), (next, i) => next - scaled[i]!);
-  const width = scale === null ? 8 : 4;
-  const bytes = new Uint8Array(raw.buffer);
-  const shuffled = bytes.map((_, at) => bytes[(at % raw.length) * width + Math.floor(at / raw.length)]!);
-  const facts = { intervals: values.length, scale, firstScaled: scale === null ? 0 : scaled[0]! };
-  return { ...facts, bytes: deflateRawSync(shuffled, { level: 1 }) };
-}
 
 /** Any 64 bits are a double: every NaN, both infinities, both zeros, the subnormal ones. */
 const anyDoubles = fc

@@ -19,8 +19,8 @@ const COLUMNS_BESIDE = 70;
 
 const program = fileURLToPath(new URL('../../dist/apps/cli/main.js', import.meta.url));
 /** Says at the end how much memory the process held at most. */
-const HOOK =
-  'data:text/javascript,process.on("exit",()=>process.stderr.write(`\\nheld ${process.resourceUsage().maxRSS * 1024 / 1e6} MB`))';
+const SAYS = 'process.stderr.write("held " + (process.resourceUsage().maxRSS * 1024) / 1e6 + " MB")';
+const HOOK = `data:text/javascript,process.on("exit",()=>${SAYS})`;
 
 /** Free text, a header, then minutes with many columns nobody asks for. */
 function* largeFile(): Generator<string> {
