@@ -33,12 +33,13 @@ export interface CsvFile {
  * Makes a record of the rows under one meaning.
  * @param file what was read
  * @param meaning what its open points are taken to mean
+ * @param only whether the rows are read under no other, so that their columns may become the record's
  * @returns columns and notes
  * @throws InputProblem where the file can't have this meaning
  */
-export function readUnder(file: CsvFile, meaning: CsvMeaning): ReadResult {
+export function readUnder(file: CsvFile, meaning: CsvMeaning, only = false): ReadResult {
   const { reader, map } = file;
-  const sources = sourcesOf(file, meaning);
+  const sources = sourcesOf(file, meaning, only);
   const rules = stampRules(file, meaning.order);
   const { moments, grid, ends, because, skipped } = placedRows(file, rules, { sources, keep: meaning.keep });
   const shiftS = ends ? grid.intervalS : 0;
@@ -103,8 +104,9 @@ function placedRows(
   return { ...placed(true), ends: true, because };
 }
 
-function sourcesOf({ reader }: CsvFile, { choice, decimal }: CsvMeaning): QuantitySource[] {
+function sourcesOf({ reader }: CsvFile, { choice, decimal }: CsvMeaning, only: boolean): QuantitySource[] {
   const values = valuesUnder(reader, decimal);
+  const spare = only && new Set(choice.columns.map(({ column }) => column)).size === choice.columns.length;
   return choice.columns.map(({ quantity, column, unit }) => ({
     quantity,
     values: values[reader.columns.indexOf(column)]!,
@@ -112,6 +114,7 @@ function sourcesOf({ reader }: CsvFile, { choice, decimal }: CsvMeaning): Quanti
     times: unit.times,
     over: unit.over,
     column: column + 1,
+    spare,
   }));
 }
 

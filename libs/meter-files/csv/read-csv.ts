@@ -26,7 +26,7 @@ export async function readCsv(source: MeterBytes, options: ReadOptions, lane: La
   const buffer = new RowBuffer(source);
   const layout = await layoutOf(buffer, options);
   const reader = new RowReader(layout, map);
-  await readRows(buffer, layout, reader, lane);
+  await readRows(buffer, layout, { reader, lane, sizeBytes: options.sizeBytes ?? 0 });
   reader.stamps.end();
   reader.problems.refuse();
   if (reader.rows.count === 0) {
@@ -77,15 +77,25 @@ function dropRows(buffer: RowBuffer): void {
 /** Which lane the rows go through: the quick one as far as it goes, or the general one alone. */
 export type Lane = 'quick' | 'general';
 
-async function readRows(buffer: RowBuffer, layout: CsvLayout, reader: RowReader, lane: Lane): Promise<void> {
+async function readRows(
+  buffer: RowBuffer,
+  layout: CsvLayout,
+  { reader, lane, sizeBytes }: { reader: RowReader; lane: Lane; sizeBytes: number },
+): Promise<void> {
   const plan = lane === 'general' ? null : reader.quickPlan();
   const quick = plan === null ? null : new QuickRows(reader.rows, plan);
   const cells = new RowCells();
   do {
     takeRows(buffer, layout, { reader, quick, cells });
+    reader.rows.likelyRows = likelyRows(reader.rows.count, buffer.takenBytes, sizeBytes);
     if (buffer.end - buffer.start > LONGEST_ROW_BYTES) buffer.refuseEndlessRow();
   } while (await buffer.more());
   if (buffer.end > buffer.start) refuseOpenQuote(buffer.rowsBefore + 1);
+}
+
+/** Rows of the whole file if it goes on as it began, with a little to spare. */
+function likelyRows(rows: number, takenBytes: number, sizeBytes: number): number {
+  return takenBytes > 0 ? Math.ceil((rows / takenBytes) * sizeBytes * 1.03) : 0;
 }
 
 /** Takes every whole row of the buffer: as far as it goes by the quick lane, the row that stops it by the general one. */
