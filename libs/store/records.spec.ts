@@ -21,6 +21,7 @@ const FACTS: RecordFacts = {
   fileName: 'year.csv',
   fileHash: 'b'.repeat(64),
   fileBytes: 12,
+  fileHeader: null,
   createdAt: NOW,
 };
 
