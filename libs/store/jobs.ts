@@ -39,6 +39,14 @@ export async function insertJob(manager: EntityManager, request: JobRequest, now
 }
 
 /**
+ * The jobs of a kind whose work is still to come, oldest first.
+ * @param kind of job
+ */
+export function unfinishedJobs(manager: EntityManager, kind: string): Promise<Job[]> {
+  return manager.find(Job, { where: { kind, state: In(UNFINISHED) }, order: { id: 'ASC' } });
+}
+
+/**
  * Takes the oldest job that waits, or whose worker has not been heard of for the length of the lease.
  * @param store the store
  * @param nowS UTC [s]

@@ -3,7 +3,6 @@ import type { FastifyReply } from 'fastify';
 import { type PlanRequest, planRequestSchema } from '#libs/contract/plan-request-schema.js';
 import { InputProblem } from '#libs/engine/index.js';
 import type { Jobs } from '#libs/jobs/jobs.js';
-import type { Job } from '#libs/store/job.js';
 import { ProposalFile } from '#libs/store/proposal-file.js';
 import { Revision } from '#libs/store/revision.js';
 import { Store } from '#libs/store/store.js';

@@ -1,11 +1,10 @@
 import { createHash } from 'node:crypto';
 import { existsSync } from 'node:fs';
-import { In } from 'typeorm';
 import { canonicalJson } from '#libs/contract/canonical-json.js';
 import { ENGINE_VERSION, InputProblem } from '#libs/engine/index.js';
 import type { Runner } from '#libs/jobs/in-process-jobs.js';
-import { Job } from '#libs/store/job.js';
-import { finishJob, type JobRequest, UNFINISHED } from '#libs/store/jobs.js';
+import type { Job } from '#libs/store/job.js';
+import { finishJob, type JobRequest, unfinishedJobs } from '#libs/store/jobs.js';
 import type { Store } from '#libs/store/store.js';
 import type { ImportOrder, RecordImport } from './record-import.js';
 import type { Spool } from './spool.js';
@@ -34,8 +33,7 @@ export function importRequest(spool: Spool, order: ImportOrder): JobRequest {
 
 /** Places in the spool of files whose import goes on. */
 export async function wantedPlaces(store: Store): Promise<string[]> {
-  const jobs = await store.read((manager) => manager.findBy(Job, { kind: IMPORT, state: In(UNFINISHED) }));
-  return jobs.map(placeOf);
+  return (await store.read((manager) => unfinishedJobs(manager, IMPORT))).map(placeOf);
 }
 
 /** Removes the file of an import that was given up. */
@@ -79,7 +77,8 @@ function placeOf(job: Job): string {
 }
 
 async function isUnfinished(store: Store, id: number): Promise<boolean> {
-  return store.read((manager) => manager.existsBy(Job, { id, state: In(UNFINISHED) }));
+  const jobs = await store.read((manager) => unfinishedJobs(manager, IMPORT));
+  return jobs.some((job) => job.id === id);
 }
 
 function lostFile(): InputProblem {
