@@ -37,6 +37,7 @@ export const meterMapSchema = z
     repair: z.enum(['none', 'hold', 'interpolate', 'typicalDay']).optional(),
     upToS: quantity('upToS', { min: 0 }).optional(),
     keepRow: z.enum(['first', 'last']).optional(),
+    overlap: z.enum(['earlier', 'later']).optional(),
   })
   .meta({ id: 'MeterMap' });
 

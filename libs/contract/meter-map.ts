@@ -75,4 +75,6 @@ export interface MeterMap {
   upToS?: number;
   /** which of several rows with one stamp and different values counts */
   keepRow?: 'first' | 'last';
+  /** which counts where a file that extends a record disagrees with it: the record as it stands, or the file */
+  overlap?: 'earlier' | 'later';
 }
