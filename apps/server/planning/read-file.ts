@@ -7,7 +7,7 @@ import { type LoadRecord, type RecordSummary, summarizeRecord } from '#libs/engi
 import { packAnswer, type WorkerAnswer } from '#libs/jobs/pool/worker-answer.js';
 import type { MeterReading } from '#libs/meter-files/meter-format.js';
 import { readMeterFile } from '#libs/meter-files/read-meter-file.js';
-import { recordInWords } from '#libs/present/put-in-words.js';
+import { qualityInWords, recordInWords } from '#libs/present/put-in-words.js';
 import { type MonthColumn, packRecord } from '#libs/store/pack-record.js';
 
 /** A meter file on disk and what is said about it. */
@@ -48,7 +48,7 @@ async function readTask({ path, ...options }: ReadTask): Promise<ReadValue> {
   const source = createReadStream(path, { highWaterMark: 1 << 18 });
   const { record, quality } = await readMeterFile(source, options);
   const summary = recordInWords(summarizeRecord(record));
-  return { record, quality, summary, hash: recordHash(record), columns: packRecord(record) };
+  return { record, quality: qualityInWords(quality), summary, hash: recordHash(record), columns: packRecord(record) };
 }
 
 /** SHA-256 of a record's bytes, 64 hexadecimal digits. */

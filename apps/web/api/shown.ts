@@ -1,5 +1,6 @@
 import type { ProblemJson } from '#libs/contract/error-body.js';
 import type { RecordSummary, Remark, Result, Verdict } from '#libs/engine/index.js';
+import type { QualityStated } from '#libs/present/quality-words.js';
 
 /** A site file as JSON: what was typed into it, units and all. */
 export type SiteDocument = Record<string, unknown> & { name: string; timeZone: string };
@@ -20,27 +21,15 @@ export interface SiteListed extends Omit<SiteShown, 'site'> {
   latest: { revision: number; verdict: Verdict; proposed: string; createdAt: string } | null;
 }
 
-/** How good the file behind a record was. */
-export interface QualityShown {
-  format: string;
-  rowsRead: number;
-  intervalsExpected: number;
-  missingSpanCount: number;
-  missingSpans: { beginS: number; endS: number; intervals: number }[];
-  duplicates: number;
-  repaired: number;
-  rejectedRows: number;
-  seasonsMissing: string[];
-  grade: 'full' | 'usable' | 'limited' | 'insufficient';
-}
-
 /** A load record as the API gives it. */
 export interface RecordShown {
   id: string;
   hash: string;
   file: { name: string | null; sha256: string; bytes: number };
   record: RecordSummary;
-  quality: QualityShown;
+  quality: QualityStated;
+  /** how the record's peak stands against the site's transformers, as they are now */
+  againstSupply: Remark[];
   createdAt: string;
 }
 

@@ -68,7 +68,9 @@ export function RecordSheet() {
           </p>
         </section>
       </div>
-      {record === undefined ? null : <ReadingFindings record={record} />}
+      {record === undefined ? null : (
+        <ReadingFindings record={record} timeZone={String(valueAt(state.document, 'timeZone'))} />
+      )}
     </>
   );
 }
