@@ -1,6 +1,6 @@
 import * as z from 'zod';
-import { METER_COLUMNS, METER_UNITS, type MeterMap } from './meter-map.js';
-import { label, quantity, whole } from './schema-parts.js';
+import { METER_COLUMNS, METER_UNITS, type MeterMap, POWER_FACTOR_SIGNS, UNIT_COLUMNS } from './meter-map.js';
+import { label, plain, quantity, whole } from './schema-parts.js';
 import { readBySchema } from './schema-problems.js';
 import { isTimeZone } from './time-zone.js';
 
@@ -14,18 +14,8 @@ export const meterMapSchema = z
     separator: z.enum([',', ';', '\t', '|']).optional(),
     decimal: z.enum(['.', ',']).optional(),
     headerRow: whole(0, 1000).optional(),
-    columns: z.partialRecord(z.enum(METER_COLUMNS), column).optional(),
-    units: z
-      .strictObject({
-        active: unit.optional(),
-        exported: unit.optional(),
-        reactive: unit.optional(),
-        lagging: unit.optional(),
-        leading: unit.optional(),
-        voltage: unit.optional(),
-        connected: unit.optional(),
-      })
-      .optional(),
+    columns: z.partialRecord(z.enum(METER_COLUMNS), z.union([column, z.array(column).length(3)])).optional(),
+    units: z.partialRecord(z.enum(UNIT_COLUMNS), unit).optional(),
     quantity: z.enum(['power', 'energy']).optional(),
     sign: z.enum(['laggingPositive', 'leadingPositive']).optional(),
     stamp: z.enum(['begin', 'end']).optional(),
@@ -33,6 +23,13 @@ export const meterMapSchema = z
     timeZone: z.string().refine(isTimeZone, { error: 'a time zone such as "Europe/Dublin" or "+10:00"' }).optional(),
     repair: z.enum(['none', 'hold', 'interpolate', 'typicalDay']).optional(),
     upToS: quantity('upToS', { min: 0 }).optional(),
+    meter: label().optional(),
+    multiplier: plain({ above: 0, max: 1e6 }).optional(),
+    energy: z.enum(['interval', 'register']).optional(),
+    powerFactorSign: z.enum(POWER_FACTOR_SIGNS).optional(),
+    voltageBetween: z.enum(['lineToLine', 'lineToNeutral']).optional(),
+    quality: z.record(label(40), z.enum(['measured', 'estimated', 'missing'])).optional(),
+    dayColumns: z.enum(['clock', 'elapsed']).optional(),
     keepRow: z.enum(['first', 'last']).optional(),
   })
   .meta({ id: 'MeterMap' });

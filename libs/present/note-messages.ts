@@ -74,7 +74,31 @@ export const NOTE_MESSAGES: Messages = {
     'Lagging kvar were taken as {lagging}; {negative:value is|values are} negative.',
     'See that the sign is so.',
   ),
-  'reactive-never-leading': told('The signed reactive column is nowhere negative; all of it was taken as lagging.'),
+  'reactive-never-leading': noted(
+    'The reactive column is nowhere negative; all of it was taken as lagging.',
+    'If the meter writes kvar without their sign, over-correction in the record would not show.',
+    'information',
+  ),
+  'reactive-unsigned': noted(
+    'The file gives kvar only as a size without a sign; all of it was taken as lagging.',
+    'Over-correction in the record would not show.',
+  ),
+  'powers-worked-out': noted(
+    'Active or reactive power was worked out from {columns}.',
+    'Near a power factor of 1 small errors of these columns are large errors of the kvar.',
+  ),
+  'power-factor-in-percent': told('The power factor is written in percent and was divided by 100.'),
+  'power-factor-sign-taken': told('The sign of the power factor was read as: {sign}.', 'See that it is so.'),
+  'phases-added': told('Columns of the three phases were added: {columns}.'),
+  'registers-differenced': told(
+    'Columns hold the readings of registers; the energy of an interval is the difference of two: {columns}.',
+  ),
+  'registers-fall': noted(
+    'A register falls over {intervals:interval|intervals}, which were left out.',
+    'Ask whether it was reset, exchanged or ran over.',
+  ),
+  'multiplier-applied': told('Powers were multiplied by the transformer ratio {multiplier}, as asked.'),
+  'voltage-to-line-to-line': told('Voltage ({column}) is line to neutral; it was multiplied by √3.'),
   'export-subtracted': told('Exported power ({column}) was subtracted from imported.'),
   'voltage-taken-line-to-line': noted('Voltage ({column}) was taken as line to line.', 'See that it is of that size.'),
   'intervals-repaired': noted(

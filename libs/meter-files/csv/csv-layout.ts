@@ -1,11 +1,13 @@
 import type { MeterMap } from '#libs/contract/meter-map.js';
 import { InputProblem } from '#libs/engine/index.js';
-import { type ColumnChoice, columnChoices, columnNamed } from './column-choice.js';
+import { columnsNamed } from './column-candidates.js';
+import { type ColumnChoice, columnChoices } from './column-choice.js';
 import type { CsvView } from './csv-view.js';
 import { type HeaderColumn, readHeaderColumn } from './header-column.js';
 import { headerWindows } from './header-windows.js';
 import { readNumberText } from './number-cell.js';
 import { RowCells } from './row-cells.js';
+import { statedRatios } from './transformer-ratio.js';
 import { chooseTimeColumns, isDated, type TimeColumns, timeContent } from './time-columns.js';
 import { readUnit } from './unit-text.js';
 
@@ -22,6 +24,8 @@ export interface CsvLayout {
   time: TimeColumns;
   choices: ColumnChoice[];
   header: readonly HeaderColumn[];
+  /** transformer ratios stated above the data, in the names or in a column of their own */
+  ratios: readonly number[];
 }
 
 interface Row {
@@ -207,7 +211,13 @@ function layoutOf(found: Candidate, map: MeterMap): CsvLayout {
   const choices = columnChoices(header, map, row.number);
   refuseDataBefore(found, time, choices);
   const mark = map.stamp ?? time.mark;
-  return { delimiter, names, headerRow: row.number, lastHeaderRow, time: { ...time, mark }, choices, header };
+  const ratios = statedRatios([...found.before.map(({ cells }) => cells.join(' ')), ...ratioColumns(names, sample)]);
+  return { delimiter, names, headerRow: row.number, lastHeaderRow, time: { ...time, mark }, choices, header, ratios };
+}
+
+/** Names with the first cell behind each: a column may repeat the ratio in every row. */
+function ratioColumns(names: readonly string[], sample: readonly string[][]): string[] {
+  return names.map((name, index) => `${name} ${sample[0]?.[index] ?? ''}`);
 }
 
 /** Rows of data above the header would be lost as if they were a preamble. */
@@ -227,14 +237,14 @@ function mappedTime(header: readonly HeaderColumn[], map: MeterMap): TimeColumns
   const { time, date, clock } = map.columns ?? {};
   const stamp = time ?? date;
   if (stamp === undefined) return null;
-  const at = columnNamed(header, stamp, time === undefined ? 'columns.date' : 'columns.time');
-  const beside = clock === undefined ? null : columnNamed(header, clock, 'columns.clock');
+  const [at] = columnsNamed(header, stamp, time === undefined ? 'columns.date' : 'columns.time');
+  const beside = clock === undefined ? undefined : columnsNamed(header, clock, 'columns.clock')[0];
   return {
-    stamp: at.index,
+    stamp: at!.index,
     clock: beside?.index ?? -1,
     end: -1,
-    mark: beside?.mark ?? at.mark,
-    zone: beside?.zone ?? at.zone,
+    mark: beside?.mark ?? at!.mark,
+    zone: beside?.zone ?? at!.zone,
   };
 }
 

@@ -114,10 +114,21 @@ function refuseOpenQuote(row: number): never {
 }
 
 function fileNotes(source: MeterBytes, layout: CsvLayout, { headers, totals }: RowReader): Remark[] {
+  const encoding = source.encoding === 'utf-8' && !isUtf8(source.head) ? 'windows-1252' : source.encoding;
   return [
-    ...(source.encoding === 'utf-8' ? [] : [note('encoding-converted', { encoding: source.encoding })]),
+    ...(encoding === 'utf-8' ? [] : [note('encoding-converted', { encoding })]),
     ...(layout.headerRow > 1 ? [note('rows-before-header', { rows: layout.headerRow - 1 })] : []),
     ...(headers.count > 0 ? [note('header-repeated', { rows: headers.count })] : []),
     ...(totals.count > 0 ? [note('total-rows-left-out', { rows: totals.count })] : []),
   ];
+}
+
+/** Eight-bit codes are told by bytes that are no UTF-8; the head may end within a letter. */
+function isUtf8(head: Uint8Array): boolean {
+  try {
+    new TextDecoder('utf-8', { fatal: true }).decode(head, { stream: true });
+    return true;
+  } catch {
+    return false;
+  }
 }

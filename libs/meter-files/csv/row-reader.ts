@@ -58,6 +58,14 @@ export class RowReader {
   }
 
   /**
+   * The numbers of a column, an open decimal mark taken as such.
+   * @param column counted from 0
+   */
+  valuesOf(column: number): Float64Array {
+    return this.rows.values[this.columns.indexOf(column)]!.subarray(0, this.rows.count);
+  }
+
+  /**
    * Reads a row.
    * @param cells the row
    * @param rowNumber counted from 1
