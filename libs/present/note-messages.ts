@@ -20,6 +20,7 @@ export const NOTE_MESSAGES: Messages = {
   'decimal-mark-settled': told('The decimal mark is “{mark}”; every other reading fails.'),
   'thousands-divided': told('{numbers:number has|numbers have} a mark between thousands.'),
   'date-order-settled': told('Dates are in the order {order}; every other reading fails.'),
+  'serial-dates': told('Stamps are a spreadsheet’s serial dates, counted from 1900 and rounded to the second.'),
   'rows-newest-first': told('The rows stand newest first; {rows:row was|rows were} turned round.'),
   'rows-put-in-order': noted(
     '{rows:row stood|rows stood} out of order and were put in place.',
@@ -38,6 +39,23 @@ export const NOTE_MESSAGES: Messages = {
     '{intervals:interval has|intervals have} no value and were left out.',
     'Missing is not zero; find out why.',
   ),
+  'values-estimated': noted(
+    '{rows:row is|rows are} marked as estimated or substituted; they were kept.',
+    'They are not measured.',
+  ),
+  'values-flagged-missing': noted(
+    '{rows:row is|rows are} marked as missing or invalid and were left out.',
+    'Missing is not zero; find out why.',
+  ),
+  'qualities-unknown': noted(
+    '{rows:row is|rows are} marked {codes}, which is not understood; the values were kept.',
+    'Ask what it means, and say it in the map.',
+  ),
+  'quality-not-read': noted(
+    'Columns called a status hold numbers that are not understood and were passed over: {columns}.',
+    'See whether they mark values that should not count.',
+  ),
+  'meters-left-out': told('Meter {meter} was read, as asked; {others:other meter was|other meters were} left out.'),
   'zone-assumed-utc': noted(
     'No zone was given, so stamps were taken as UTC.',
     'Give the zone: days and months depend on it.',

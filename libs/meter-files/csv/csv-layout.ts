@@ -7,8 +7,9 @@ import { type HeaderColumn, readHeaderColumn } from './header-column.js';
 import { headerWindows } from './header-windows.js';
 import { readNumberText } from './number-cell.js';
 import { RowCells } from './row-cells.js';
+import { type SideColumns, sideColumns } from './side-columns.js';
 import { statedRatios } from './transformer-ratio.js';
-import { chooseTimeColumns, isDated, type TimeColumns, timeContent } from './time-columns.js';
+import { chooseTimeColumns, isDated, isSerial, type TimeColumns } from './time-columns.js';
 import { readUnit } from './unit-text.js';
 
 /** How the rows of a delimited file are to be read. */
@@ -26,6 +27,7 @@ export interface CsvLayout {
   header: readonly HeaderColumn[];
   /** transformer ratios stated above the data, in the names or in a column of their own */
   ratios: readonly number[];
+  side: SideColumns;
 }
 
 interface Row {
@@ -116,7 +118,7 @@ function rowsOf(view: CsvView, separator: string, most: number): Row[] {
 
 function candidatesAt(rows: Row[], separator: string, map: MeterMap): Candidate[] {
   const delimiter = separator.charCodeAt(0);
-  if (map.headerRow === 0) return headless(rows, delimiter);
+  if (map.headerRow === 0) return headless(rows, delimiter, map);
   const found: Candidate[] = [];
   for (const [index, row] of rows.entries()) {
     if (map.headerRow === undefined ? !mayName(row) : row.number !== map.headerRow) continue;
@@ -126,8 +128,10 @@ function candidatesAt(rows: Row[], separator: string, map: MeterMap): Candidate[
   return found;
 }
 
-function headless(rows: Row[], delimiter: number): Candidate[] {
-  const row = rows.find(({ cells }) => cells.some((cell) => isDated(cell) !== null));
+function headless(rows: Row[], delimiter: number, { columns }: MeterMap): Candidate[] {
+  const time = columns?.time ?? columns?.date;
+  const isTime = (cell: string, column: number) => isDated(cell) !== null || (column + 1 === time && isSerial(cell));
+  const row = rows.find(({ cells }) => cells.some(isTime));
   if (row === undefined) return [];
   const header = row.cells.map((_, index) => readHeaderColumn('', index));
   const number = row.number - 1;
@@ -163,10 +167,14 @@ function candidateAt(rows: Row[], index: number, delimiter: number, map: MeterMa
   if (!said && (roles.length < 2 || roles.every(({ role }) => role === 'time'))) return [];
   const lastHeaderRow = row.number + (hasUnits ? 1 : 0);
   const data = dataBehind(rows, index + (hasUnits ? 2 : 1));
-  const followed = data[0]?.cells.some((cell) => timeContent([cell]) !== null && isDated(cell) !== null) === true;
+  const followed = data[0]?.cells.some((cell, column) => isDatedCell(cell, header[column])) === true;
   const asWide = followed && data[0]!.cells.length === header.length;
   const score = roles.length + (followed ? FOLLOWED : 0) + (asWide ? FOLLOWED : 0);
   return [{ delimiter, row, lastHeaderRow, header, before: rows.slice(0, index), data, score }];
+}
+
+function isDatedCell(cell: string, column: HeaderColumn | undefined): boolean {
+  return isDated(cell) !== null || (column?.role === 'time' && isSerial(cell));
 }
 
 /** The first rows from an index on that hold anything. */
@@ -197,7 +205,7 @@ function layoutOf(found: Candidate, map: MeterMap): CsvLayout {
   const { delimiter, row, lastHeaderRow, header } = found;
   const names = header.map(({ name }) => name);
   const sample = found.data.map(({ cells }) => cells);
-  const time = mappedTime(header, map) ?? chooseTimeColumns(header, sample);
+  const time = mappedTime(header, map, sample) ?? chooseTimeColumns(header, sample);
   if (time === null && sample.length === 0) {
     throw new InputProblem([{ code: 'empty-file', expected: 'rows of data under the header', found: 'none' }]);
   }
@@ -212,7 +220,18 @@ function layoutOf(found: Candidate, map: MeterMap): CsvLayout {
   refuseDataBefore(found, time, choices);
   const mark = map.stamp ?? time.mark;
   const ratios = statedRatios([...found.before.map(({ cells }) => cells.join(' ')), ...ratioColumns(names, sample)]);
-  return { delimiter, names, headerRow: row.number, lastHeaderRow, time: { ...time, mark }, choices, header, ratios };
+  const side = sideColumns(header, sample, choices, map);
+  return {
+    delimiter,
+    names,
+    headerRow: row.number,
+    lastHeaderRow,
+    time: { ...time, mark },
+    choices,
+    header,
+    ratios,
+    side,
+  };
 }
 
 /** Names with the first cell behind each: a column may repeat the ratio in every row. */
@@ -233,7 +252,7 @@ function refuseDataBefore({ before, header }: Candidate, time: TimeColumns, choi
   throw new InputProblem([{ code: 'unreadable', row: data.number, expected, found: 'data' }]);
 }
 
-function mappedTime(header: readonly HeaderColumn[], map: MeterMap): TimeColumns | null {
+function mappedTime(header: readonly HeaderColumn[], map: MeterMap, sample: readonly string[][]): TimeColumns | null {
   const { time, date, clock } = map.columns ?? {};
   const stamp = time ?? date;
   if (stamp === undefined) return null;
@@ -245,6 +264,7 @@ function mappedTime(header: readonly HeaderColumn[], map: MeterMap): TimeColumns
     end: -1,
     mark: beside?.mark ?? at!.mark,
     zone: beside?.zone ?? at!.zone,
+    serial: sample.some((cells) => isSerial(cells[at!.index] ?? '')),
   };
 }
 

@@ -19,7 +19,8 @@ import { csvSources, rawColumns } from './csv-sources.js';
  */
 export function readUnder(file: CsvFile, meaning: CsvMeaning): ReadResult {
   const { reader, map } = file;
-  const raw = rawColumns(file, meaning);
+  const { missing, estimated, unknown } = reader.qualities.byMeaning(meaning.quality);
+  const raw = rawColumns(file, meaning, missing);
   const rules = stampRules(file, meaning.order);
   const placed = placedRows(file, rules, { values: raw.map(({ values }) => values), keep: meaning.keep });
   const { moments, grid, ends, because, skipped } = placed;
@@ -40,6 +41,9 @@ export function readUnder(file: CsvFile, meaning: CsvMeaning): ReadResult {
     ...(ends && because !== null ? [note('stamps-mark-ends', { because })] : []),
     ...(!ends && assumed ? [note('stamps-assumed-beginnings', {})] : []),
     ...rowNotes(grid, built, { skipped, own: reader.rows.offsetS !== null, keep: meaning.keep }),
+    ...(missing.size > 0 ? [note('values-flagged-missing', { rows: missing.size })] : []),
+    ...(estimated.size > 0 ? [note('values-estimated', { rows: estimated.size })] : []),
+    ...(unknown.rows > 0 ? [note('qualities-unknown', { codes: unknown.codes.join(', '), rows: unknown.rows })] : []),
     ...quantityNotes(file, meaning, { found, built }),
   ];
   const left = skipped + built.withoutValue + grid.overruled + reader.headers.count + reader.totals.count;

@@ -13,10 +13,25 @@ export interface RawColumn extends QuantityColumn {
   values: Float64Array;
 }
 
-/** The columns of a file under one meaning, as read. */
-export function rawColumns({ reader }: CsvFile, { choice, decimal }: CsvMeaning): RawColumn[] {
-  const values = valuesUnder(reader, decimal);
+/**
+ * The columns of a file under one meaning, as read.
+ * @param file what was read
+ * @param meaning what it is taken to mean
+ * @param missing rows whose quality says that they hold no value
+ */
+export function rawColumns(
+  { reader }: CsvFile,
+  { choice, decimal }: CsvMeaning,
+  missing: ReadonlySet<number>,
+): RawColumn[] {
+  const values = valuesUnder(reader, decimal).map((column) => (missing.size === 0 ? column : without(column, missing)));
   return choice.columns.map((column) => ({ ...column, values: values[reader.columns.indexOf(column.column)]! }));
+}
+
+function without(column: Float64Array, missing: ReadonlySet<number>): Float64Array {
+  const values = column.slice();
+  for (const row of missing) values[row] = Number.NaN;
+  return values;
 }
 
 /** The columns, numbers whose only mark divides thousands put right. */

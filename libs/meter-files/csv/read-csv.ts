@@ -1,14 +1,18 @@
+import { Question } from '#libs/contract/question.js';
 import { InputProblem, type Remark } from '#libs/engine/index.js';
 import type { MeterBytes } from '../meter-bytes.js';
 import type { MeterReading, ReadOptions } from '../meter-format.js';
 import { note } from '../note.js';
 import { closeReading } from '../record/close-reading.js';
+import { shownReading } from '../record/reading-shown.js';
 import { type CsvLayout, findLayout, looksTabular } from './csv-layout.js';
+import type { CsvFile } from './csv-meaning.js';
+import { MeterRows } from './meter-rows.js';
 import { QuickRows } from './quick-rows.js';
 import { LONGEST_ROW_BYTES, RowBuffer } from './row-buffer.js';
 import { RowCells } from './row-cells.js';
-import { RowReader } from './row-reader.js';
-import { settleMeaning } from './settle-meaning.js';
+import type { RowReader } from './row-reader.js';
+import { firstReading, settleMeaning } from './settle-meaning.js';
 
 /** A header is looked for in so much of the file at once; what lies before it is dropped [bytes]. */
 const VIEW_BYTES = 262_144;
@@ -25,15 +29,28 @@ export async function readCsv(source: MeterBytes, options: ReadOptions, lane: La
   const map = options.map ?? {};
   const buffer = new RowBuffer(source);
   const layout = await layoutOf(buffer, options);
-  const reader = new RowReader(layout, map);
-  await readRows(buffer, layout, reader, lane);
-  reader.stamps.end();
-  reader.problems.refuse();
-  if (reader.rows.count === 0) {
+  const rows = new MeterRows(layout, map);
+  await readRows(buffer, layout, rows, lane);
+  const { readers, meters } = rows.close();
+  const [reader] = readers.values();
+  if (reader === undefined || reader.rows.count === 0) {
     throw new InputProblem([{ code: 'empty-file', expected: 'rows of data under the header', found: 'none' }]);
   }
+  if (readers.size > 1) askWhichMeter({ layout, map, options }, readers, meters);
   const result = settleMeaning({ layout, reader, map, options });
-  return closeReading({ ...result, notes: [...fileNotes(source, layout, reader), ...result.notes] }, map);
+  const left = map.meter === undefined ? [] : [note('meters-left-out', { meter: map.meter, others: meters - 1 })];
+  return closeReading({ ...result, notes: [...fileNotes(source, layout, reader), ...left, ...result.notes] }, map);
+}
+
+/** A reading for each meter; a meter that can't be read as the file stands has none. */
+function askWhichMeter(file: Omit<CsvFile, 'reader'>, readers: Map<string, RowReader>, meters: number): never {
+  const found = [...readers].map(([meter, reader]) => ({ meter, result: firstReading({ ...file, reader }) }));
+  const readings = found.flatMap(({ meter, result }) =>
+    result instanceof InputProblem ? [] : [shownReading({ meter }, result.columns)],
+  );
+  const [failed] = found.flatMap(({ result }) => (result instanceof InputProblem ? [result] : []));
+  if (readings.length === 0) throw failed!;
+  throw new Question([{ id: 'meter', about: `which of the ${meters} meters in the file is read`, readings }]);
 }
 
 async function layoutOf(buffer: RowBuffer, { map = {} }: ReadOptions): Promise<CsvLayout> {
@@ -77,12 +94,12 @@ function dropRows(buffer: RowBuffer): void {
 /** Which lane the rows go through: the quick one as far as it goes, or the general one alone. */
 export type Lane = 'quick' | 'general';
 
-async function readRows(buffer: RowBuffer, layout: CsvLayout, reader: RowReader, lane: Lane): Promise<void> {
-  const plan = lane === 'general' ? null : reader.quickPlan();
-  const quick = plan === null ? null : new QuickRows(reader.rows, plan);
+async function readRows(buffer: RowBuffer, layout: CsvLayout, rows: MeterRows, lane: Lane): Promise<void> {
+  const plan = lane === 'general' ? null : rows.first.quickPlan();
+  const quick = plan === null ? null : new QuickRows(rows.first.rows, plan);
   const cells = new RowCells();
   do {
-    takeRows(buffer, layout, { reader, quick, cells });
+    takeRows(buffer, layout, { rows, quick, cells });
     if (buffer.end - buffer.start > LONGEST_ROW_BYTES) buffer.refuseEndlessRow();
   } while (await buffer.more());
   if (buffer.end > buffer.start) refuseOpenQuote(buffer.rowsBefore + 1);
@@ -92,19 +109,19 @@ async function readRows(buffer: RowBuffer, layout: CsvLayout, reader: RowReader,
 function takeRows(
   buffer: RowBuffer,
   layout: CsvLayout,
-  { reader, quick, cells }: { reader: RowReader; quick: QuickRows | null; cells: RowCells },
+  { rows, quick, cells }: { rows: MeterRows; quick: QuickRows | null; cells: RowCells },
 ): void {
   const marks = { delimiter: layout.delimiter, rowEnd: buffer.rowEnd };
   for (;;) {
-    quick?.takeFrom(buffer, reader.mark.sign);
+    quick?.takeFrom(buffer, rows.first.mark.sign);
     const next = cells.split(buffer.bytes, buffer.start, buffer.end, marks);
     if (next < 0) return;
     buffer.start = next;
     buffer.rowsBefore++;
     if (buffer.rowsBefore <= layout.lastHeaderRow) continue;
-    const before = reader.rows.count;
-    reader.take(cells, buffer.rowsBefore);
-    if (reader.rows.count > before) quick?.learn(cells);
+    const before = rows.first.rows.count;
+    rows.take(cells, buffer.rowsBefore);
+    if (rows.first.rows.count > before) quick?.learn(cells);
   }
 }
 
@@ -119,6 +136,10 @@ function fileNotes(source: MeterBytes, layout: CsvLayout, { headers, totals }: R
     ...(encoding === 'utf-8' ? [] : [note('encoding-converted', { encoding })]),
     ...(layout.headerRow > 1 ? [note('rows-before-header', { rows: layout.headerRow - 1 })] : []),
     ...(headers.count > 0 ? [note('header-repeated', { rows: headers.count })] : []),
+    ...(layout.side.unread.length > 0
+      ? [note('quality-not-read', { columns: layout.side.unread.map((column) => layout.names[column]).join(', ') })]
+      : []),
+    ...(layout.time.serial ? [note('serial-dates', {})] : []),
     ...(totals.count > 0 ? [note('total-rows-left-out', { rows: totals.count })] : []),
   ];
 }

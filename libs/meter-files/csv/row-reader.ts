@@ -7,6 +7,7 @@ import { DecimalMark, KEPT_COLUMNS } from './decimal-mark.js';
 import { type NumberCell, readNumberInto, readNumberText } from './number-cell.js';
 import type { QuickPlan } from './quick-rows.js';
 import type { RowCells } from './row-cells.js';
+import { RowQualities } from './row-qualities.js';
 import { RowStamps } from './row-stamps.js';
 
 const TOTAL =
@@ -27,6 +28,7 @@ export class RowReader {
   readonly mark: DecimalMark;
   readonly problems = new RowProblems();
   readonly stamps: RowStamps;
+  readonly qualities: RowQualities;
   readonly headers: SkippedRows = { count: 0, first: 0 };
   readonly totals: SkippedRows = { count: 0, first: 0 };
   /** columns of numbers, counted from 0, in the order of `rows.values` */
@@ -43,6 +45,7 @@ export class RowReader {
     this.rows = new StampedRows(this.columns.length);
     this.mark = new DecimalMark(map.decimal, layout.delimiter);
     this.stamps = new RowStamps(this.rows, layout.time, this.problems);
+    this.qualities = new RowQualities(layout.side.quality);
     this.#layout = layout;
     this.#standby = new Set(used.filter(({ quantity }) => quantity === 'standby').map(({ column }) => column));
     const inAll = (column: number) =>
@@ -50,10 +53,11 @@ export class RowReader {
     this.#lenient = new Set(this.columns.filter((column) => !inAll(column)));
   }
 
-  /** What the quick lane may do for this file, or null where a state or a clock column of its own needs the general one. */
+  /** What the quick lane may do for this file, or null where it needs the general one: states, qualities, meters, serial dates, a clock time apart. */
   quickPlan(): QuickPlan | null {
-    const { time, names, delimiter } = this.#layout;
-    if (time.clock >= 0 || this.#standby.size > 0) return null;
+    const { time, names, delimiter, side } = this.#layout;
+    if (time.clock >= 0 || time.serial || this.#standby.size > 0) return null;
+    if (side.meter.length + side.quality.length > 0) return null;
     return { delimiter, width: names.length, stamp: time.stamp, end: time.end, columns: this.columns };
   }
 
@@ -83,6 +87,7 @@ export class RowReader {
     }
     const index = this.rows.add(rowNumber);
     this.stamps.keep(index, stamp, cells);
+    this.qualities.take(cells, index, rowNumber);
     for (let k = 0; k < this.columns.length; k++) this.rows.values[k]![index] = this.#number(cells, k, index);
   }
 

@@ -38,6 +38,33 @@ export function settleMeaning(file: CsvFile): ReadResult {
   }
 }
 
+/**
+ * The first reading that a file can have, whatever else it can mean; for showing it beside others.
+ * @param file what was read
+ * @returns the record's columns, or why there are none
+ */
+export function firstReading(file: CsvFile): ReadResult | InputProblem {
+  try {
+    return firstAmong(file, openPoints(file));
+  } catch (problem) {
+    if (problem instanceof InputProblem) return problem;
+    throw problem;
+  }
+}
+
+function firstAmong(file: CsvFile, points: OpenPoints): ReadResult {
+  let failure: unknown;
+  for (const meaning of meanings({ ...points, keep: file.map.keepRow === undefined ? ['first'] : points.keep })) {
+    try {
+      return readUnder(file, meaning);
+    } catch (problem) {
+      if (!(problem instanceof InputProblem)) throw problem;
+      failure ??= problem;
+    }
+  }
+  throw failure;
+}
+
 /** Rows that disagree are asked about, with the row that raises it, or refused where either answer gives one record. */
 function askWhichCounts(file: CsvFile, points: OpenPoints, problem: ConflictingRows): never {
   try {
@@ -62,7 +89,7 @@ function openPoints(file: CsvFile): OpenPoints {
     energy: energyMeanings(file),
     powerFactorSign: factorSigns(file),
     multiplier: map.multiplier === undefined ? [1, ...layout.ratios] : [map.multiplier],
-    quality: [map.quality ?? {}],
+    quality: reader.qualities.readings(map),
   };
 }
 

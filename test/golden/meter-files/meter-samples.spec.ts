@@ -549,6 +549,7 @@ describe('the notes of the table', () => {
       {},
       { siteTimeZone: 'Europe/Berlin' },
       { map: { keepRow: 'last', repair: 'hold', upToS: 1800 } },
+      { map: { meter: 'M-1' } },
       { map: { multiplier: 80, powerFactorSign: 'negativeLeads', voltageBetween: 'lineToNeutral' } },
     ] as const;
     const files = [...names.map((name) => sample(name.slice(0, -4))), utf16];

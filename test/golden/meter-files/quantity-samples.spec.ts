@@ -30,6 +30,30 @@ describe('numbers and letters', () => {
   });
 });
 
+describe('stamps', () => {
+  it.each<[string, string, Expected]>([
+    [
+      'serial-dates',
+      'day 45 418 of a spreadsheet is 6 May 2024',
+      { ...quarters, kw: [40, 41, 42, 43], lagging: [20, 21, 22, 23], notes: ['serial-dates'] },
+    ],
+    [
+      'serial-date-and-fraction',
+      'the time of day stands apart, as the fraction of a day',
+      { ...quarters, kw: [40, 41, 42], lagging: [20, 21, 22], notes: ['serial-dates'] },
+    ],
+  ])('%s: %s', async (name, _why, expected) => {
+    await expectRecord(name, {}, expected);
+  });
+
+  it('are no serial dates in a column that is not named for them', async () => {
+    const file = sample('serial-dates').toString().replace('Zeitstempel', 'Zähler x');
+    expect((await refusalOf(file)).code).toBe('no-time-column');
+    const { record } = await readMeterText(file, { map: { columns: { time: 1 } } });
+    expect(record.firstS).toBe(Date.UTC(2024, 4, 6) / 1000);
+  });
+});
+
 describe('quantities', () => {
   it.each<[string, string, Expected]>([
     [
@@ -108,6 +132,66 @@ describe('quantities', () => {
   });
 });
 
+describe('columns beside the values', () => {
+  it.each<[string, string, Expected]>([
+    [
+      'quality-letters',
+      'E and S are estimates, M without a value is a gap, the quality of a temperature is nothing to the record',
+      {
+        ...quarters,
+        kw: [40, 41, 43],
+        lagging: [20, 21, 23],
+        missing: 1,
+        notes: ['values-estimated', 'intervals-without-value'],
+      },
+    ],
+    [
+      'quality-status',
+      'zeros marked as missing are gaps; X is kept, and it is said that nobody knows it',
+      {
+        ...quarters,
+        kw: [40, 44, 48],
+        lagging: [20, 24, 28],
+        missing: 1,
+        notes: ['values-flagged-missing', 'values-estimated', 'qualities-unknown'],
+      },
+    ],
+    [
+      'quality-numbers',
+      'numbers of a status are passed over aloud',
+      { ...quarters, kw: [40, 50], lagging: [20, 25], notes: ['quality-not-read'] },
+    ],
+    ['meters-one', 'a column that names one meter is no matter', { ...quarters, kw: [40, 41], lagging: [20, 21] }],
+  ])('%s: %s', async (name, _why, expected) => {
+    await expectRecord(name, {}, expected);
+  });
+
+  it('quality-letters: the count of estimates is that of rows', async () => {
+    const { record } = await readMeterText(sample('quality-letters'));
+    expect(record.notes).toContainEqual(expect.objectContaining({ code: 'values-estimated', values: { rows: 2 } }));
+    const { record: strict } = await readMeterText(sample('quality-letters'), { map: { quality: { e: 'missing' } } });
+    expect(Array.from(strict.activeKw)).toEqual([40, 43]);
+  });
+
+  it('meters: an absent meter is refused, naming those that are there', async () => {
+    expect((await refusalOf(sample('meters'), { map: { meter: 'M-3' } })).problems).toMatchObject([
+      { code: 'out-of-range', path: 'meter', expected: 'a meter of the file: M-1, M-2' },
+    ]);
+    const nameless = sample('meters').toString().replace('M-2,2024-05-06 00:15', ',2024-05-06 00:15');
+    expect((await refusalOf(nameless)).problems).toMatchObject([{ code: 'missing', row: 5, column: 1 }]);
+  });
+
+  it('meters: what is wrong in the rows of another meter is no matter', async () => {
+    const broken = sample('meters').toString().replace('410,210', 'x,y');
+    expect((await refusalOf(broken)).problems).toMatchObject([
+      { code: 'bad-number', row: 5, column: 3 },
+      { code: 'bad-number', row: 5, column: 4 },
+    ]);
+    const { record } = await readMeterText(broken, { map: { meter: 'M-1' } });
+    expect(Array.from(record.activeKw)).toEqual([40, 41]);
+  });
+});
+
 describe('what is refused', () => {
   it.each([
     ['phase-missing', [{ code: 'inconsistent', column: 2, found: 'kW L1, kW L3' }]],
@@ -135,6 +219,22 @@ describe('what is asked', () => {
       [
         [{ voltageBetween: 'lineToLine' }, [23.9023, 15.9349], [31.8697, 11.9512], none(2)],
         [{ voltageBetween: 'lineToNeutral' }, [41.4, 27.6], [55.2, 20.7], none(2)],
+      ],
+    ],
+    [
+      'quality-open',
+      'quality',
+      [
+        [{ quality: { M: 'measured' } }, [40, 50, 42], [20, 25, 21], none(3)],
+        [{ quality: { M: 'missing' } }, [40, 42], [20, 21], none(2)],
+      ],
+    ],
+    [
+      'meters',
+      'meter',
+      [
+        [{ meter: 'M-1' }, [40, 41], [20, 21], none(2)],
+        [{ meter: 'M-2' }, [400, 410], [200, 210], none(2)],
       ],
     ],
     [
