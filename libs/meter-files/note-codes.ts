@@ -21,6 +21,7 @@ export const NOTE_CODES = {
   'values-flagged-missing': ['rows'],
   'qualities-unknown': ['codes', 'rows'],
   'quality-not-read': ['columns'],
+  'days-in-columns': ['columns'],
   'meters-left-out': ['meter', 'others'],
   'zone-assumed-utc': [],
   'zone-from-header': ['zone'],

@@ -55,6 +55,7 @@ export const NOTE_MESSAGES: Messages = {
     'Columns called a status hold numbers that are not understood and were passed over: {columns}.',
     'See whether they mark values that should not count.',
   ),
+  'days-in-columns': told('The file has a row a day; the intervals of a day stand in {columns} columns.'),
   'meters-left-out': told('Meter {meter} was read, as asked; {others:other meter was|other meters were} left out.'),
   'zone-assumed-utc': noted(
     'No zone was given, so stamps were taken as UTC.',

@@ -3,6 +3,8 @@ import { InputProblem } from '#libs/engine/index.js';
 import { columnsNamed } from './column-candidates.js';
 import { type ColumnChoice, columnChoices } from './column-choice.js';
 import type { CsvView } from './csv-view.js';
+import { dayLayout } from './day-layout.js';
+import { type DaySlots, daySlots } from './day-slots.js';
 import { type HeaderColumn, readHeaderColumn } from './header-column.js';
 import { headerWindows } from './header-windows.js';
 import { readNumberText } from './number-cell.js';
@@ -28,6 +30,16 @@ export interface CsvLayout {
   /** transformer ratios stated above the data, in the names or in a column of their own */
   ratios: readonly number[];
   side: SideColumns;
+  /** columns of the hours of a day in a file of one row a day */
+  days: DayLayout | null;
+}
+
+/** Where a file of one row a day has what. */
+export interface DayLayout extends DaySlots {
+  /** columns whose cells say what a row holds, such as its unit; counted from 0 */
+  labels: number[];
+  /** what stands above the header and may say it for the rows below */
+  title: string;
 }
 
 interface Row {
@@ -121,7 +133,7 @@ function candidatesAt(rows: Row[], separator: string, map: MeterMap): Candidate[
   if (map.headerRow === 0) return headless(rows, delimiter, map);
   const found: Candidate[] = [];
   for (const [index, row] of rows.entries()) {
-    if (map.headerRow === undefined ? !mayName(row) : row.number !== map.headerRow) continue;
+    if (map.headerRow === undefined ? !mayName(row) && !namesDay(row) : row.number !== map.headerRow) continue;
     found.push(...candidateAt(rows, index, delimiter, map));
     if ((found.at(-1)?.score ?? 0) >= 2 * FOLLOWED) break;
   }
@@ -156,6 +168,11 @@ function mayName({ cells }: Row): boolean {
   );
 }
 
+/** Hours may be numbered. */
+function namesDay({ cells }: Row): boolean {
+  return cells.length >= 24 && !cells.some((cell) => isDated(cell)) && daySlots(cells, undefined) !== null;
+}
+
 function candidateAt(rows: Row[], index: number, delimiter: number, map: MeterMap): Candidate[] {
   const row = rows[index]!;
   const under = rows[index + 1];
@@ -164,7 +181,7 @@ function candidateAt(rows: Row[], index: number, delimiter: number, map: MeterMa
   const header = names.map(readHeaderColumn);
   const roles = header.filter(({ role }) => role !== null);
   const said = map.headerRow !== undefined || map.columns !== undefined;
-  if (!said && (roles.length < 2 || roles.every(({ role }) => role === 'time'))) return [];
+  if (!said && !namesDay(row) && (roles.length < 2 || roles.every(({ role }) => role === 'time'))) return [];
   const lastHeaderRow = row.number + (hasUnits ? 1 : 0);
   const data = dataBehind(rows, index + (hasUnits ? 2 : 1));
   const followed = data[0]?.cells.some((cell, column) => isDatedCell(cell, header[column])) === true;
@@ -205,6 +222,10 @@ function layoutOf(found: Candidate, map: MeterMap): CsvLayout {
   const { delimiter, row, lastHeaderRow, header } = found;
   const names = header.map(({ name }) => name);
   const sample = found.data.map(({ cells }) => cells);
+  const ratios = statedRatios([...found.before.map(({ cells }) => cells.join(' ')), ...ratioColumns(names, sample)]);
+  const file = { delimiter, names, headerRow: row.number, lastHeaderRow, header, ratios };
+  const day = dayLayout(found, sample, map);
+  if (day !== null) return { ...file, ...day, choices: [], side: { meter: [], quality: [], unread: [] } };
   const time = mappedTime(header, map, sample) ?? chooseTimeColumns(header, sample);
   if (time === null && sample.length === 0) {
     throw new InputProblem([{ code: 'empty-file', expected: 'rows of data under the header', found: 'none' }]);
@@ -219,19 +240,8 @@ function layoutOf(found: Candidate, map: MeterMap): CsvLayout {
   const choices = columnChoices(header, map, row.number);
   refuseDataBefore(found, time, choices);
   const mark = map.stamp ?? time.mark;
-  const ratios = statedRatios([...found.before.map(({ cells }) => cells.join(' ')), ...ratioColumns(names, sample)]);
   const side = sideColumns(header, sample, choices, map);
-  return {
-    delimiter,
-    names,
-    headerRow: row.number,
-    lastHeaderRow,
-    time: { ...time, mark },
-    choices,
-    header,
-    ratios,
-    side,
-  };
+  return { ...file, time: { ...time, mark }, choices, side, days: null };
 }
 
 /** Names with the first cell behind each: a column may repeat the ratio in every row. */

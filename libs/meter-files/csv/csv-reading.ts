@@ -5,7 +5,6 @@ import { type BuiltColumns, buildColumns } from '../record/build-columns.js';
 import type { ReadResult } from '../record/close-reading.js';
 import { gridRows, type IntervalGrid } from '../record/interval-grid.js';
 import { type Moments, momentsOf, type StampRules, showsEnds, skippedRows } from '../time/moments.js';
-import type { DateOrder } from '../time/stamp-text.js';
 import type { CsvFile, CsvMeaning } from './csv-meaning.js';
 import { quantityNotes } from './csv-notes.js';
 import { csvSources, rawColumns } from './csv-sources.js';
@@ -21,7 +20,7 @@ export function readUnder(file: CsvFile, meaning: CsvMeaning): ReadResult {
   const { reader, map } = file;
   const { missing, estimated, unknown } = reader.qualities.byMeaning(meaning.quality);
   const raw = rawColumns(file, meaning, missing);
-  const rules = stampRules(file, meaning.order);
+  const rules = stampRules(file, meaning);
   const placed = placedRows(file, rules, { values: raw.map(({ values }) => values), keep: meaning.keep });
   const { moments, grid, ends, because, skipped } = placed;
   const { rowNumber } = reader.rows;
@@ -33,7 +32,9 @@ export function readUnder(file: CsvFile, meaning: CsvMeaning): ReadResult {
     shiftS: ends ? grid.intervalS : 0,
     rowNumber,
   };
-  const built = buildColumns(ordered, found.sources, found.workedOut === null && map.sign === 'leadingPositive');
+  // the columns of a day are no columns of one quantity
+  const sources = file.layout.days === null ? found.sources : found.sources.map((one) => ({ ...one, column: 0 }));
+  const built = buildColumns(ordered, sources, found.workedOut === null && map.sign === 'leadingPositive');
   // a register's readings are moments, whichever end of an interval other columns may mean
   const assumed = rules.mark === null && Number.isNaN(reader.rows.spanS) && found.registers.length < raw.length;
   const notes = [
@@ -51,12 +52,13 @@ export function readUnder(file: CsvFile, meaning: CsvMeaning): ReadResult {
   return { columns: built.columns, duplicates: grid.duplicates, notes, counts, zone: siteZone(file, moments, grid) };
 }
 
-function stampRules({ layout, map, options, reader }: CsvFile, order: DateOrder): StampRules {
+function stampRules({ layout, map, options, reader }: CsvFile, { order, days }: CsvMeaning): StampRules {
   const said = options.timeZone ?? map.timeZone ?? null;
   const zoneFromHeader = said === null && layout.time.zone !== null;
   const zone = said ?? layout.time.zone ?? options.siteTimeZone ?? null;
-  const ranged = !Number.isNaN(reader.rows.spanS) && map.stamp === undefined;
-  return { order, mark: ranged ? 'begin' : layout.time.mark, zone, zoneFromHeader };
+  const ranged = layout.days !== null || (!Number.isNaN(reader.rows.spanS) && map.stamp === undefined);
+  const elapsed = layout.days !== null && days === 'elapsed';
+  return { order, mark: ranged ? 'begin' : layout.time.mark, zone, zoneFromHeader, elapsed };
 }
 
 interface Placed {

@@ -1,11 +1,10 @@
 import type { QuantitySource } from '../record/build-columns.js';
 import type { IntervalGrid } from '../record/interval-grid.js';
 import type { QuantityColumn } from './column-choice.js';
-import type { CsvFile, CsvMeaning } from './csv-meaning.js';
+import type { CsvFile, CsvMeaning, ReadRows } from './csv-meaning.js';
 import type { CsvQuantity } from './csv-quantity.js';
 import { type DecimalSign, KEPT_COLUMNS, thousands } from './decimal-mark.js';
 import { differencesOf, energyColumns, movesOf } from './energy-registers.js';
-import type { RowReader } from './row-reader.js';
 import { sumOf, type WorkedOutPowers, workedOutPowers } from './worked-out-powers.js';
 
 /** A column of a file in the meaning it is read under. */
@@ -35,7 +34,7 @@ function without(column: Float64Array, missing: ReadonlySet<number>): Float64Arr
 }
 
 /** The columns, numbers whose only mark divides thousands put right. */
-function valuesUnder({ rows, mark }: RowReader, decimal: DecimalSign | null): Float64Array[] {
+function valuesUnder({ rows, mark }: ReadRows, decimal: DecimalSign | null): Float64Array[] {
   const divided = decimal === ',' ? mark.openDots : decimal === '.' ? mark.openCommas : [];
   const values = rows.values.map((column) => column.subarray(0, rows.count));
   const own = new Set<number>();

@@ -7,6 +7,7 @@ import { closeReading } from '../record/close-reading.js';
 import { shownReading } from '../record/reading-shown.js';
 import { type CsvLayout, findLayout, looksTabular } from './csv-layout.js';
 import type { CsvFile } from './csv-meaning.js';
+import { DayRows } from './day-rows.js';
 import { MeterRows } from './meter-rows.js';
 import { QuickRows } from './quick-rows.js';
 import { LONGEST_ROW_BYTES, RowBuffer } from './row-buffer.js';
@@ -29,17 +30,46 @@ export async function readCsv(source: MeterBytes, options: ReadOptions, lane: La
   const map = options.map ?? {};
   const buffer = new RowBuffer(source);
   const layout = await layoutOf(buffer, options);
+  const file = { layout, map, options };
+  const read = layout.days === null ? await meterRead(buffer, file, lane) : await daysRead(buffer, file);
+  const result = settleMeaning(read.file);
+  return closeReading({ ...result, notes: [...fileNotes(source, read.file), ...read.notes, ...result.notes] }, map);
+}
+
+interface Read {
+  file: CsvFile;
+  notes: Remark[];
+}
+
+/** Rows of intervals, of one meter or of several. */
+async function meterRead(buffer: RowBuffer, file: Omit<CsvFile, 'reader'>, lane: Lane): Promise<Read> {
+  const { layout, map } = file;
   const rows = new MeterRows(layout, map);
-  await readRows(buffer, layout, rows, lane);
+  await readRows(buffer, layout, rows, lane === 'general' ? null : rows.first);
   const { readers, meters } = rows.close();
   const [reader] = readers.values();
-  if (reader === undefined || reader.rows.count === 0) {
-    throw new InputProblem([{ code: 'empty-file', expected: 'rows of data under the header', found: 'none' }]);
-  }
-  if (readers.size > 1) askWhichMeter({ layout, map, options }, readers, meters);
-  const result = settleMeaning({ layout, reader, map, options });
-  const left = map.meter === undefined ? [] : [note('meters-left-out', { meter: map.meter, others: meters - 1 })];
-  return closeReading({ ...result, notes: [...fileNotes(source, layout, reader), ...left, ...result.notes] }, map);
+  if (reader === undefined || reader.rows.count === 0) refuseEmpty();
+  if (readers.size > 1) askWhichMeter(file, readers, meters);
+  const notes = map.meter === undefined ? [] : [note('meters-left-out', { meter: map.meter, others: meters - 1 })];
+  return { file: { ...file, reader }, notes };
+}
+
+/** A row a day; the rows themselves say what they hold. */
+async function daysRead(buffer: RowBuffer, { layout, map, options }: Omit<CsvFile, 'reader'>): Promise<Read> {
+  const days = layout.days!;
+  const reader = new DayRows(layout, days, map);
+  await readRows(buffer, layout, reader, null);
+  const notes = [
+    note('days-in-columns', { columns: days.slots.length }),
+    ...(days.mark === null ? [note('stamps-assumed-beginnings', {})] : []),
+  ];
+  const settled = reader.layoutOf(map);
+  if (reader.rows.count === 0) refuseEmpty();
+  return { file: { layout: settled, reader, map, options }, notes };
+}
+
+function refuseEmpty(): never {
+  throw new InputProblem([{ code: 'empty-file', expected: 'rows of data under the header', found: 'none' }]);
 }
 
 /** A reading for each meter; a meter that can't be read as the file stands has none. */
@@ -94,34 +124,47 @@ function dropRows(buffer: RowBuffer): void {
 /** Which lane the rows go through: the quick one as far as it goes, or the general one alone. */
 export type Lane = 'quick' | 'general';
 
-async function readRows(buffer: RowBuffer, layout: CsvLayout, rows: MeterRows, lane: Lane): Promise<void> {
-  const plan = lane === 'general' ? null : rows.first.quickPlan();
-  const quick = plan === null ? null : new QuickRows(rows.first.rows, plan);
-  const cells = new RowCells();
+interface RowTaker {
+  take(cells: RowCells, rowNumber: number): void;
+}
+
+/** Reads every row; those of the usual shape by the quick lane where there is a reader for it. */
+async function readRows(
+  buffer: RowBuffer,
+  layout: CsvLayout,
+  taker: RowTaker,
+  quickReader: RowReader | null,
+): Promise<void> {
+  const plan = quickReader?.quickPlan() ?? null;
+  const quick = plan === null || quickReader === null ? null : new QuickRows(quickReader.rows, plan);
+  const lanes = { taker, quickReader, quick, cells: new RowCells() };
   do {
-    takeRows(buffer, layout, { rows, quick, cells });
+    takeRows(buffer, layout, lanes);
     if (buffer.end - buffer.start > LONGEST_ROW_BYTES) buffer.refuseEndlessRow();
   } while (await buffer.more());
   if (buffer.end > buffer.start) refuseOpenQuote(buffer.rowsBefore + 1);
 }
 
+interface Lanes {
+  taker: RowTaker;
+  quickReader: RowReader | null;
+  quick: QuickRows | null;
+  cells: RowCells;
+}
+
 /** Takes every whole row of the buffer: as far as it goes by the quick lane, the row that stops it by the general one. */
-function takeRows(
-  buffer: RowBuffer,
-  layout: CsvLayout,
-  { rows, quick, cells }: { rows: MeterRows; quick: QuickRows | null; cells: RowCells },
-): void {
+function takeRows(buffer: RowBuffer, layout: CsvLayout, { taker, quickReader, quick, cells }: Lanes): void {
   const marks = { delimiter: layout.delimiter, rowEnd: buffer.rowEnd };
   for (;;) {
-    quick?.takeFrom(buffer, rows.first.mark.sign);
+    quick?.takeFrom(buffer, quickReader!.mark.sign);
     const next = cells.split(buffer.bytes, buffer.start, buffer.end, marks);
     if (next < 0) return;
     buffer.start = next;
     buffer.rowsBefore++;
     if (buffer.rowsBefore <= layout.lastHeaderRow) continue;
-    const before = rows.first.rows.count;
-    rows.take(cells, buffer.rowsBefore);
-    if (rows.first.rows.count > before) quick?.learn(cells);
+    const before = quickReader?.rows.count ?? 0;
+    taker.take(cells, buffer.rowsBefore);
+    if (quick !== null && quickReader!.rows.count > before) quick.learn(cells);
   }
 }
 
@@ -130,7 +173,8 @@ function refuseOpenQuote(row: number): never {
   throw new InputProblem([{ code: 'unreadable', row, expected, found: 'the end of the file' }]);
 }
 
-function fileNotes(source: MeterBytes, layout: CsvLayout, { headers, totals }: RowReader): Remark[] {
+function fileNotes(source: MeterBytes, { layout, reader }: CsvFile): Remark[] {
+  const { headers, totals } = reader;
   const encoding = source.encoding === 'utf-8' && !isUtf8(source.head) ? 'windows-1252' : source.encoding;
   return [
     ...(encoding === 'utf-8' ? [] : [note('encoding-converted', { encoding })]),

@@ -90,7 +90,15 @@ function openPoints(file: CsvFile): OpenPoints {
     powerFactorSign: factorSigns(file),
     multiplier: map.multiplier === undefined ? [1, ...layout.ratios] : [map.multiplier],
     quality: reader.qualities.readings(map),
+    days: dayMeanings(file),
   };
+}
+
+/** Counted columns of a day may follow the clock or the time passed; where there is one for a 25th hour, it is the latter. */
+function dayMeanings({ layout: { days }, map }: CsvFile): CsvMeaning['days'][] {
+  if (map.dayColumns !== undefined) return [map.dayColumns];
+  if (days === null || !days.counted) return ['clock'];
+  return days.slots.some(({ beginS }) => beginS >= 86_400) ? ['elapsed'] : ['clock', 'elapsed'];
 }
 
 /** Registers and energies of intervals are asked about where numbers and names leave both possible. */
@@ -169,6 +177,10 @@ const ASKED: Record<Point, { id: string; about: string }> = {
     about: 'whether a negative power factor means leading kvar, lagging kvar, or exported power',
   },
   multiplier: { id: 'multiplier', about: 'whether the numbers still have to be multiplied by the transformer ratio' },
+  days: {
+    id: 'dayColumns',
+    about: 'whether the columns of a day follow the clock or count the time since midnight where clocks change',
+  },
   quality: { id: 'quality', about: 'whether values of this quality are measured or missing' },
 };
 
@@ -188,6 +200,8 @@ function mapOf(point: Point, meaning: CsvMeaning): MeterMap {
       return { powerFactorSign: meaning.powerFactorSign };
     case 'multiplier':
       return { multiplier: meaning.multiplier };
+    case 'days':
+      return { dayColumns: meaning.days };
     case 'quality':
       return { quality: { ...meaning.quality } };
   }

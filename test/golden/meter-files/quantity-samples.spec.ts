@@ -132,6 +132,113 @@ describe('quantities', () => {
   });
 });
 
+const ramp = (from: number, count: number) => Array.from({ length: count }, (_, i) => from + i);
+const same = (value: number, count: number) => Array<number>(count).fill(value);
+
+describe('a row a day', () => {
+  const hours = { intervalS: 3600, notes: ['days-in-columns'] };
+  it.each<[string, string, Expected]>([
+    [
+      'days-unit-column',
+      'columns from 01:00 to 24:00 mark ends; a column of units says what a row holds',
+      {
+        ...hours,
+        begin: '2024-05-06T00:00',
+        kw: [...ramp(10, 24), ...ramp(20, 24)],
+        lagging: [5.5, ...same(6, 23), 5.5, ...same(6, 23)],
+      },
+    ],
+    [
+      'days-blocks',
+      'the line above a block says what it holds; columns from 00:00 are taken as beginnings, aloud',
+      {
+        ...hours,
+        begin: '2024-05-06T00:00',
+        kw: ramp(100, 24),
+        lagging: ramp(50, 24),
+        notes: ['days-in-columns', 'stamps-assumed-beginnings', 'header-repeated'],
+      },
+    ],
+    [
+      'days-hour-ending',
+      'hour ending 1 begins at midnight; quantities stand side by side',
+      { ...hours, begin: '2024-05-06T00:00', kw: ramp(100, 24), lagging: ramp(50, 24) },
+    ],
+  ])('%s: %s', async (name, _why, expected) => {
+    await expectRecord(name, {}, expected);
+  });
+
+  it.each<[string, string, Expected]>([
+    [
+      'days-25-hours',
+      'a column for a 25th hour counts the hours as they passed',
+      {
+        ...hours,
+        begin: '2024-10-25T22:00',
+        kw: [...ramp(0, 24), ...ramp(30, 25)],
+        lagging: [...same(1, 24), ...same(2, 25)],
+      },
+    ],
+    [
+      'days-23-hours',
+      'a value at the 24th hour and none at the third follow the clock, which skipped the third',
+      {
+        ...hours,
+        begin: '2024-03-30T23:00',
+        kw: [40, 41, ...ramp(43, 21)],
+        lagging: same(3, 23),
+        notes: ['days-in-columns', 'skipped-hour-left-out'],
+      },
+    ],
+    [
+      'days-doubled-hour',
+      'an hour that is named twice is the doubled one, and empty on other days',
+      {
+        ...hours,
+        begin: '2024-10-25T22:00',
+        kw: [...same(1, 24), ...ramp(30, 25)],
+        lagging: [...same(1, 24), ...same(2, 25)],
+        notes: ['days-in-columns', 'doubled-hour-by-order'],
+      },
+    ],
+  ])('%s, in Berlin: %s', async (name, _why, expected) => {
+    await expectRecord(name, { siteTimeZone: 'Europe/Berlin' }, expected);
+  });
+
+  it('days-counted-open: 24 counted columns of a day of 25 hours are asked about', async () => {
+    const zone = { siteTimeZone: 'Europe/Berlin' };
+    const { questions } = await questionOf(sample('days-counted-open'), zone);
+    expect(questions.map(({ id, readings }) => [id, readings.map(({ map }) => map)])).toEqual([
+      ['dayColumns', [{ dayColumns: 'clock' }, { dayColumns: 'elapsed' }]],
+    ]);
+    const beginsOf = async (dayColumns: 'clock' | 'elapsed') => {
+      const { record } = await readMeterText(sample('days-counted-open'), { ...zone, map: { dayColumns } });
+      return Array.from(record.beginS, (beginS) => (beginS - Date.UTC(2024, 9, 26, 22) / 1000) / 3600);
+    };
+    expect(await beginsOf('clock')).toEqual([0, 1, 2, ...ramp(4, 21)]);
+    expect(await beginsOf('elapsed')).toEqual(ramp(0, 24));
+    // in a zone without changes there is nothing to ask
+    expect((await readMeterText(sample('days-counted-open'))).record.beginS).toHaveLength(24);
+  });
+
+  it('names row and column of what is no number, and of a row that is too short', async () => {
+    const text = sample('days-unit-column').toString();
+    expect((await refusalOf(text.replace('5,5', 'five'))).problems).toMatchObject([
+      { code: 'bad-number', row: 3, column: 3, found: '"five"' },
+    ]);
+    expect((await refusalOf(text.replace(';6\n', '\n'))).problems).toMatchObject([{ code: 'wrong-length', row: 3 }]);
+    expect((await refusalOf(text.replaceAll('kvarh', 'm3'))).problems).toMatchObject([{ code: 'no-reactive-column' }]);
+  });
+
+  it('drops a day that is there twice, and asks about one that differs', async () => {
+    const text = sample('days-unit-column').toString();
+    const [, first = '', second = ''] = text.split('\n');
+    expect((await readMeterText(`${text}${first}\n${second}\n`)).record.duplicates).toBe(24);
+    const { questions } = await questionOf(`${text}${first.replace(';10;', ';99;')}\n${second}\n`);
+    expect(questions.map(({ id }) => id)).toEqual(['keepRow']);
+  });
+});
+
 describe('columns beside the values', () => {
   it.each<[string, string, Expected]>([
     [
