@@ -48,6 +48,7 @@ export const NOTE_CODES = {
   'voltage-taken-line-to-line': ['column'],
   'voltage-to-line-to-line': ['column'],
   'intervals-repaired': ['method', 'intervals', 'upToS'],
+  'quadrants-added': [],
   'nem12-time': ['zone'],
   'nem12-header-missing': [],
   'nem12-end-missing': [],

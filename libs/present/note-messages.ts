@@ -124,6 +124,9 @@ export const NOTE_MESSAGES: Messages = {
     '{intervals:interval was|intervals were} filled by {method}, as asked.',
     'They are not measured.',
   ),
+  'quadrants-added': told(
+    'Reactive energy of quadrants I and II was added as lagging, of III and IV as leading; exported energy was subtracted.',
+  ),
   'nem12-time': told('NEM12 keeps its own time, UTC{zone}, all year.'),
   'nem12-header-missing': noted('The NEM12 header record is missing.', 'The file may have been cut.'),
   'nem12-end-missing': noted('The NEM12 end record is missing.', 'The file may have been cut.'),

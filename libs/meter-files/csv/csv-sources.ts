@@ -33,8 +33,15 @@ function without(column: Float64Array, missing: ReadonlySet<number>): Float64Arr
   return values;
 }
 
-/** The columns, numbers whose only mark divides thousands put right. */
-function valuesUnder({ rows, mark }: ReadRows, decimal: DecimalSign | null): Float64Array[] {
+/**
+ * The columns, numbers whose only mark divides thousands put right.
+ * @param read rows and what their numbers leave open
+ * @param decimal mark they are read under
+ */
+export function valuesUnder(
+  { rows, mark }: Pick<ReadRows, 'rows' | 'mark'>,
+  decimal: DecimalSign | null,
+): Float64Array[] {
   const divided = decimal === ',' ? mark.openDots : decimal === '.' ? mark.openCommas : [];
   const values = rows.values.map((column) => column.subarray(0, rows.count));
   const own = new Set<number>();

@@ -66,6 +66,9 @@ function isOpen(before: number, after: number, leadingZero: boolean): boolean {
   return after === 3 && before >= 1 && before <= 3 && !leadingZero;
 }
 
+/** More than any double needs to be written out in full. */
+const LONGEST_NUMBER = 1100;
+
 const MISSING = new Set(
   '|-|--|---|?|*|#|.|na|n/a|n.a.|n.a|nan|null|nil|none|missing|#n/a|#na|<na>|no data|nodata|fehlt|k.a.|s/o|nd|n.d.'.split(
     '|',
@@ -85,6 +88,10 @@ const EXPONENT = /^(?:\d+(?:[.,]\d*)?|[.,]\d+)e[+-]?\d{1,6}$/i;
 export function readNumberText(text: string, cell: NumberCell): void {
   const bare = text.trim();
   cell.value = Number.NaN;
+  if (bare.length > LONGEST_NUMBER) {
+    cell.form = 'wrong';
+    return;
+  }
   if (MISSING.has(bare.toLowerCase())) {
     cell.form = 'missing';
     return;

@@ -1,3 +1,4 @@
+// long: one entry a sample, most of it tables
 // Samples of the project's own invention for what columns can hold and how rows can be laid out; every number is worked out
 // by hand from the file beside it. Powers follow from S² = P² + Q², P = S·λ and S = √3·U·I, with 3-4-5 triangles.
 import { describe, expect, it } from 'vitest';
@@ -236,6 +237,54 @@ describe('a row a day', () => {
     expect((await readMeterText(`${text}${first}\n${second}\n`)).record.duplicates).toBe(24);
     const { questions } = await questionOf(`${text}${first.replace(';10;', ';99;')}\n${second}\n`);
     expect(questions.map(({ id }) => id)).toEqual(['keepRow']);
+  });
+});
+
+describe('rows by quadrant with a season flag', () => {
+  // Q > 0 in I and II, Q < 0 in III and IV: R1 and R2 lag, R3 and R4 lead
+  const berlin = { siteTimeZone: 'Europe/Berlin' };
+
+  it('quadrant-rows: R1 and R2 lag, R3 and R4 lead, exported energy is subtracted; the last midnight shows ends', async () => {
+    const { quality } = await expectRecord('quadrant-rows', berlin, {
+      begin: '2024-05-05T22:00',
+      intervalS: 900,
+      kw: [40, 44, -24, -36],
+      lagging: [20, 0, 16, 0],
+      leading: [0, 8, 2, 16],
+      missing: 7 * 96 - 4,
+      notes: ['quadrants-added', 'stamps-mark-ends'],
+    });
+    expect(quality.format).toBe('quadrant-rows');
+  });
+
+  it('quadrant-rows-autumn: the flag tells the passes of the doubled hour apart, in any order', async () => {
+    const expected = { begin: '2024-10-27T00:00', intervalS: 1800, kw: [2, 4, 6, 8, 10], lagging: same(2, 5) };
+    await expectRecord('quadrant-rows-autumn', berlin, expected);
+    const [first, ...others] = sample('quadrant-rows-autumn').toString().trim().split('\n');
+    const { record } = await readMeterText([...others, first].join('\n'), berlin);
+    expect(Array.from(record.activeKw)).toEqual(expected.kw);
+    // without a zone standard time is taken for UTC, and nothing is lost or doubled
+    expect(Array.from((await readMeterText(sample('quadrant-rows-autumn'))).record.activeKw)).toEqual(expected.kw);
+  });
+
+  it('quadrant-rows-flag: a flag that contradicts the zone is refused', async () => {
+    expect((await refusalOf(sample('quadrant-rows-flag'), berlin)).problems).toMatchObject([
+      { code: 'bad-time', row: 2, column: 2, found: '0' },
+    ]);
+  });
+
+  it('quadrant-rows-order: quadrant II without export means that the columns stand otherwise', async () => {
+    expect((await refusalOf(sample('quadrant-rows-order'), berlin)).problems).toMatchObject([
+      { code: 'inconsistent', row: 1, column: 6 },
+    ]);
+  });
+
+  it('are plain text where a map numbers the columns, and no such rows where a cell is otherwise', async () => {
+    const map = { headerRow: 0, columns: { time: 1, active: 3, reactive: 5 }, quantity: 'energy' as const };
+    const plain = await questionOf(sample('quadrant-rows-autumn'), { map, timeZone: '+01:00' });
+    expect(plain.problems).toMatchObject([{ code: 'question', row: 3 }]);
+    const other = sample('quadrant-rows').toString().replace('00:30;1;', '00:30;2;');
+    expect((await refusalOf(other)).code).toBe('no-active-column');
   });
 });
 
