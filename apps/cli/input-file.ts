@@ -1,12 +1,12 @@
 import { open } from 'node:fs/promises';
 import { InputProblem, type ProblemCode } from '#libs/engine/index.js';
+import { fileChunks } from '#libs/meter-files/file-chunks.js';
 import { STDIN } from './command-line.js';
 
-const CHUNK_BYTES = 256 * 1024;
 /** A site or a map is written by hand; far larger files are something else. */
 const MOST_JSON_BYTES = 8 * 1024 * 1024;
 
-/** A file on its way in. */
+/** A file on its way in; a chunk of it holds until the one after it is asked for. */
 export interface InputFile {
   bytes: AsyncIterable<Uint8Array>;
   /** undefined for standard input */
@@ -24,8 +24,7 @@ export async function openInput(path: string): Promise<InputFile> {
   try {
     const file = await open(path, 'r');
     const { size } = await file.stat();
-    const handled = file.createReadStream({ highWaterMark: CHUNK_BYTES });
-    return { bytes: readable(handled, path), sizeBytes: size };
+    return { bytes: readable(fileChunks(file), path), sizeBytes: size };
   } catch (error) {
     throw unreadable(error, path);
   }
@@ -44,7 +43,7 @@ export async function readJson(path: string): Promise<unknown> {
   for await (const chunk of bytes) {
     size += chunk.length;
     if (size > MOST_JSON_BYTES) throw refusal('too-large', `a file of at most ${MOST_JSON_BYTES} bytes`, 'more');
-    chunks.push(chunk);
+    chunks.push(chunk.slice());
   }
   return parseJson(Buffer.concat(chunks));
 }

@@ -1,6 +1,6 @@
 import * as z from 'zod';
 import { METER_COLUMNS, METER_UNITS, type MeterMap, POWER_FACTOR_SIGNS, UNIT_COLUMNS } from './meter-map.js';
-import { label, plain, quantity, whole } from './schema-parts.js';
+import { label, plain, POSITIVE, quantity, whole } from './schema-parts.js';
 import { readBySchema } from './schema-problems.js';
 import { isTimeZone } from './time-zone.js';
 
@@ -11,6 +11,7 @@ const unit = z.enum(METER_UNITS);
 export const meterMapSchema = z
   .strictObject({
     format: label(40).optional(),
+    sheet: z.union([whole(1, 256), label()], { error: 'a sheet number counted from 1, or a sheet name' }).optional(),
     separator: z.enum([',', ';', '\t', '|']).optional(),
     decimal: z.enum(['.', ',']).optional(),
     headerRow: whole(0, 1000).optional(),
@@ -21,10 +22,10 @@ export const meterMapSchema = z
     stamp: z.enum(['begin', 'end']).optional(),
     dateOrder: z.enum(['ymd', 'dmy', 'mdy']).optional(),
     timeZone: z.string().refine(isTimeZone, { error: 'a time zone such as "Europe/Dublin" or "+10:00"' }).optional(),
+    meter: label(80).optional(),
+    multiplier: plain(POSITIVE).optional(),
     repair: z.enum(['none', 'hold', 'interpolate', 'typicalDay']).optional(),
     upToS: quantity('upToS', { min: 0 }).optional(),
-    meter: label().optional(),
-    multiplier: plain({ above: 0, max: 1e6 }).optional(),
     energy: z.enum(['interval', 'register']).optional(),
     powerFactorSign: z.enum(POWER_FACTOR_SIGNS).optional(),
     voltageBetween: z.enum(['lineToLine', 'lineToNeutral']).optional(),

@@ -87,6 +87,8 @@ export type ColumnName = number | string;
 export interface MeterMap {
   /** a row of the table of formats, for example `csv` */
   format?: string;
+  /** the sheet of a workbook: its name, or its number counted from 1 */
+  sheet?: number | string;
   separator?: ',' | ';' | '\t' | '|';
   decimal?: '.' | ',';
   /** row of the column names, counted from 1; 0 where the file has none */
@@ -104,13 +106,13 @@ export interface MeterMap {
   dateOrder?: 'ymd' | 'dmy' | 'mdy';
   /** IANA name or fixed offset the stamps are in */
   timeZone?: string;
+  /** number or name of the meter that is meant, where the file holds several */
+  meter?: string;
+  /** ratio of the instrument transformers that the file's values still have to be multiplied by */
+  multiplier?: number;
   repair?: MeterRepair;
   /** longest gap that is repaired [s] */
   upToS?: number;
-  /** which of several meters in the file is read: its text in the meter column */
-  meter?: string;
-  /** transformer ratio the file's kW, kvar and kVA still have to be multiplied by */
-  multiplier?: number;
   /** what columns of energy hold: the energy of each interval, or the reading of a register that only rises */
   energy?: 'interval' | 'register';
   /** what a negative power factor says */

@@ -1,9 +1,16 @@
+import { isCim, readCim } from './cim/read-cim.js';
 import { readCsv } from './csv/read-csv.js';
+import { isEspi, readEspi } from './espi/read-espi.js';
 import type { MeterFormat } from './meter-format.js';
+import { isMscons, readMscons } from './mscons/read-mscons.js';
 import { isNem12 } from './nem12/nem12-records.js';
 import { readNem12 } from './nem12/read-nem12.js';
 import { isQuadrantRows } from './quadrant-rows/quadrant-line.js';
 import { readQuadrantRows } from './quadrant-rows/read-quadrant-rows.js';
+import { isProfileReadout, readProfileReadout } from './profile-readout/read-profile-readout.js';
+import { isParquet, readParquet } from './parquet/read-parquet.js';
+import { isXlsx, readXlsx } from './xlsx/read-xlsx.js';
+import { xmlStart } from './xml/xml-start.js';
 
 /** Every format that is read, in the order in which a file is tried against them; delimited text takes what is left. */
 export const FORMATS: readonly MeterFormat[] = [
@@ -25,13 +32,68 @@ export const FORMATS: readonly MeterFormat[] = [
     read: readQuadrantRows,
   },
   {
+    name: 'mscons',
+    title: 'MSCONS, metered services consumption report (UN/EDIFACT)',
+    described: [
+      'UN/CEFACT, United Nations Directories for EDIFACT, message MSCONS, https://service.unece.org/trade/untdid/d04b/trmd/mscons_c.htm',
+      'ISO 9735-1:2002, EDIFACT application level syntax rules',
+      'IEC 62056-61:2006, Object identification system (OBIS)',
+    ],
+    recognises: isMscons,
+    read: readMscons,
+  },
+  {
+    name: 'profile-readout',
+    title: 'Load profile P.01 or P.02 of a meter read-out',
+    described: [
+      'IEC 62056-21:2002, Direct local data exchange, data sets of the read-out',
+      'VDEW, Lastenheft Elektronische Lastgangzähler, version 2.1.2, form of the load profile P.01 (from memory)',
+      'IEC 62056-61:2006, Object identification system (OBIS)',
+    ],
+    recognises: isProfileReadout,
+    read: readProfileReadout,
+  },
+  {
+    name: 'xlsx',
+    title: 'Workbook with a sheet of rows under a header',
+    described: ['ECMA-376 / ISO/IEC 29500-1, Office Open XML File Formats: SpreadsheetML, and part 2, Open Packaging'],
+    recognises: isXlsx,
+    read: readXlsx,
+  },
+  {
+    name: 'parquet',
+    title: 'Parquet with named columns',
+    described: ['Apache Parquet file format specification, https://parquet.apache.org/docs/file-format/'],
+    recognises: isParquet,
+    read: readParquet,
+  },
+  {
+    name: 'cim-meter-readings',
+    title: 'MeterReadings message of the Common Information Model',
+    described: [
+      'IEC 61968-9:2013, Interfaces for meter reading and control; its code lists as the CIM17 class model prints them, the order of the 18 codes from memory',
+    ],
+    recognises: isCim,
+    read: readCim,
+  },
+  {
+    name: 'espi',
+    title: 'ESPI (Green Button) feed of usage data',
+    described: [
+      'NAESB REQ.21, Energy Services Provider Interface, schema espi.xsd, version 4.0, 13 December 2023; forms of 1.1 to 3.3 from memory',
+      'RFC 4287, The Atom Syndication Format, https://www.rfc-editor.org/rfc/rfc4287',
+    ],
+    recognises: isEspi,
+    read: readEspi,
+  },
+  {
     name: 'csv',
     title: 'Delimited text with a header row',
     described: [
       'RFC 4180, Common Format and MIME Type for Comma-Separated Values (CSV) Files, https://www.rfc-editor.org/rfc/rfc4180',
       'ISO 8601-1:2019, Date and time',
     ],
-    recognises: (head) => !head.subarray(0, 512).includes(0),
+    recognises: (head) => !head.subarray(0, 512).includes(0) && xmlStart(head) === '',
     read: readCsv,
   },
 ];

@@ -13,12 +13,19 @@ export class MeterBytes {
   /** the first bytes, at most 64 KiB, without a byte order mark */
   readonly head: Uint8Array;
   readonly encoding: Encoding;
+  /** share of the work that reading the bytes is; less than 1 where most of it comes after the last byte */
+  readonly #share: { of: number };
   readonly #chunks: AsyncGenerator<Uint8Array>;
 
-  private constructor(head: Uint8Array, encoding: Encoding, chunks: AsyncGenerator<Uint8Array>) {
+  private constructor(
+    head: Uint8Array,
+    encoding: Encoding,
+    source: { chunks: AsyncGenerator<Uint8Array>; share: { of: number } },
+  ) {
     this.head = head.subarray(0, HEAD_BYTES);
     this.encoding = encoding;
-    this.#chunks = chunks;
+    this.#chunks = source.chunks;
+    this.#share = source.share;
   }
 
   /**
@@ -31,16 +38,25 @@ export class MeterBytes {
     source: AsyncIterable<Uint8Array>,
     options: { watch?: Watch; sizeBytes?: number } = {},
   ): Promise<MeterBytes> {
-    const raw = watched(source, options);
+    const share = { of: 1 };
+    const raw = watched(source, options, share);
     const start = await firstOf(raw);
-    const encoding = encodingOf(start);
+    const encoding = isBinary(start) ? 'utf-8' : encodingOf(start);
     if (encoding === 'utf-8') {
       const head = withoutMark(start);
-      return new MeterBytes(head, encoding, again(head, raw));
+      return new MeterBytes(head, encoding, { chunks: again(head, raw), share });
     }
     const decoded = decodedChunks(again(start, raw), encoding);
     const head = (await decoded.next()).value ?? new Uint8Array(0);
-    return new MeterBytes(head, encoding, again(head, decoded));
+    return new MeterBytes(head, encoding, { chunks: again(head, decoded), share });
+  }
+
+  /**
+   * Says that most of the work comes after the last byte, so that the progress of reading them stops short of the end.
+   * @param share of the whole work, 0 … 1
+   */
+  isShareOfWork(share: number): void {
+    this.#share.of = share;
   }
 
   /**
@@ -61,15 +77,16 @@ export class MeterBytes {
 async function* watched(
   source: AsyncIterable<Uint8Array>,
   { watch, sizeBytes }: { watch?: Watch; sizeBytes?: number },
+  share: { of: number },
 ): AsyncGenerator<Uint8Array> {
   let readBytes = 0;
   for await (const chunk of source) {
     if (watch?.stopped()) throw new Stopped('the reading was stopped');
     yield chunk;
     readBytes += chunk.length;
-    if (sizeBytes) watch?.report(Math.min(1, readBytes / sizeBytes));
+    if (sizeBytes) watch?.report(share.of * Math.min(1, readBytes / sizeBytes));
   }
-  watch?.report(1);
+  watch?.report(share.of);
 }
 
 async function firstOf(raw: AsyncGenerator<Uint8Array>): Promise<Uint8Array> {
@@ -78,7 +95,8 @@ async function firstOf(raw: AsyncGenerator<Uint8Array>): Promise<Uint8Array> {
   while (size < HEAD_BYTES) {
     const step = await raw.next();
     if (step.done) break;
-    chunks.push(step.value.slice());
+    // a copy: `slice` of a Buffer would share its memory
+    chunks.push(new Uint8Array(step.value));
     size += step.value.length;
   }
   const all = new Uint8Array(size);
@@ -88,6 +106,18 @@ async function firstOf(raw: AsyncGenerator<Uint8Array>): Promise<Uint8Array> {
     at += chunk.length;
   }
   return all;
+}
+
+/** First bytes of ZIP archives, compound files and Parquet: none of them is text, whatever their zeros look like. */
+const BINARY_STARTS = [
+  [0x50, 0x4b, 0x03, 0x04],
+  [0xd0, 0xcf, 0x11, 0xe0],
+  [0x50, 0x41, 0x52, 0x31],
+  [0x50, 0x41, 0x52, 0x45],
+];
+
+function isBinary(head: Uint8Array): boolean {
+  return BINARY_STARTS.some((start) => start.every((byte, index) => head[index] === byte));
 }
 
 /** A byte order mark says it; without one, ASCII text in UTF-16 has a NUL in every other byte. */

@@ -1,6 +1,8 @@
 import { describe, expect, it } from 'vitest';
 import { InputProblem, Stopped } from '#libs/engine/index.js';
 import { lines, readMeterText, refusalOf, streamOf } from '../../test/support/meter-text.js';
+import { sampleParquet } from '../../test/support/sample-parquet.js';
+import { sampleWorkbooks } from '../../test/support/sample-workbooks.js';
 import { FORMATS } from './formats.js';
 import { MAX_INTERVALS } from './meter-format.js';
 import { readMeterFile } from './read-meter-file.js';
@@ -22,7 +24,10 @@ describe('a meter file', () => {
   it('is refused where it holds nothing, or nothing that is text', async () => {
     expect((await refusalOf('')).code).toBe('empty-file');
     expect((await refusalOf('\ufeff \r\n')).code).toBe('empty-file');
-    expect((await refusalOf(Uint8Array.of(0x50, 0x4b, 3, 4, 0x14, 0, 0, 0))).code).toBe('unknown-format');
+    expect((await refusalOf(Uint8Array.of(0x89, 0x50, 0x4e, 0x47, 0x14, 0, 0, 0))).code).toBe('unknown-format');
+    expect((await refusalOf(Uint8Array.of(0x50, 0x4b, 3, 4, 0x14, 0, 0, 0))).problems).toMatchObject([
+      { code: 'unreadable', path: 'archive' },
+    ]);
   });
 
   it('is read alike in chunks of any size', async () => {
@@ -37,6 +42,23 @@ describe('a meter file', () => {
     await expect(reading).rejects.toBeInstanceOf(Stopped);
     expect(fractions).toEqual([...fractions].sort((a, b) => a - b));
     expect(fractions.every((fraction) => fraction > 0 && fraction < 1)).toBe(true);
+  });
+
+  it('of a format that is spooled tells how far it is to the end, and stops in the middle', async () => {
+    for (const { bytes } of [sampleWorkbooks()[0]!, sampleParquet()[0]!]) {
+      const fractions: number[] = [];
+      const report = (fraction: number) => void fractions.push(fraction);
+      await readMeterFile(streamOf(bytes, 512), {
+        watch: { report, stopped: () => false },
+        sizeBytes: bytes.length,
+      });
+      expect(fractions).toEqual([...fractions].sort((a, b) => a - b));
+      expect(fractions.some((fraction) => fraction > 0 && fraction <= 0.2)).toBe(true);
+      expect(fractions.at(-1)).toBe(1);
+      const watch = { report, stopped: () => fractions.at(-1)! >= 0.05 };
+      fractions.length = 0;
+      await expect(readMeterFile(streamOf(bytes), { watch, sizeBytes: bytes.length })).rejects.toBeInstanceOf(Stopped);
+    }
   });
 
   it('lets its source close when it is refused', async () => {
@@ -72,7 +94,10 @@ describe('a meter file', () => {
   });
 
   it('has formats that each name their public description', () => {
-    expect(FORMATS.map(({ name }) => name)).toEqual(['nem12', 'csv']);
+    const names = FORMATS.map(({ name }) => name);
+    expect(new Set(names).size).toBe(names.length);
+    // what nothing else recognises
+    expect(names.at(-1)).toBe('csv');
     for (const { title, described } of FORMATS) {
       expect(title).not.toBe('');
       expect(described.length).toBeGreaterThan(0);

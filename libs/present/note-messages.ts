@@ -56,7 +56,7 @@ export const NOTE_MESSAGES: Messages = {
     'See whether they mark values that should not count.',
   ),
   'days-in-columns': told('The file has a row a day; the intervals of a day stand in {columns} columns.'),
-  'meters-left-out': told('Meter {meter} was read, as asked; {others:other meter was|other meters were} left out.'),
+  'meter-chosen': told('Meter {meter} was read, as asked; {others:other meter was|other meters were} left out.'),
   'zone-assumed-utc': noted(
     'No zone was given, so stamps were taken as UTC.',
     'Give the zone: days and months depend on it.',
@@ -112,11 +112,6 @@ export const NOTE_MESSAGES: Messages = {
   'registers-differenced': told(
     'Columns hold the readings of registers; the energy of an interval is the difference of two: {columns}.',
   ),
-  'registers-fall': noted(
-    'A register falls over {intervals:interval|intervals}, which were left out.',
-    'Ask whether it was reset, exchanged or ran over.',
-  ),
-  'multiplier-applied': told('Powers were multiplied by the transformer ratio {multiplier}, as asked.'),
   'voltage-to-line-to-line': told('Voltage ({column}) is line to neutral; it was multiplied by √3.'),
   'export-subtracted': told('Exported power ({column}) was subtracted from imported.'),
   'voltage-taken-line-to-line': noted('Voltage ({column}) was taken as line to line.', 'See that it is of that size.'),
@@ -126,6 +121,64 @@ export const NOTE_MESSAGES: Messages = {
   ),
   'quadrants-added': told(
     'Reactive energy of quadrants I and II was added as lagging, of III and IV as leading; exported energy was subtracted.',
+  ),
+  'channels-added': told('Channels {channels} were added up as {quantity}.'),
+  'channels-left-out': told(
+    'Channels {channels} say the same in another way, or nothing a record needs, and were left out.',
+  ),
+  'meters-left-out': noted(
+    'Other meters of the file give no record by themselves and were left out: {meters}.',
+    'See that the right one was read.',
+  ),
+  'values-substituted': noted(
+    '{values:value is|values are} estimated, substituted or provisional, as the file itself says.',
+    'They are not measured.',
+  ),
+  'values-unusable': noted(
+    '{values:value is|values are} marked as unusable and were left out.',
+    'Missing is not zero; find out why.',
+  ),
+  'values-multiplied': told('All energies and powers were multiplied by {multiplier}, as asked.'),
+  'status-words': noted(
+    'The meter set a status word for {intervals:interval|intervals}.',
+    'Ask what it means: a power failure, a changed clock or a fault.',
+  ),
+  'partial-intervals-left-out': noted(
+    '{intervals:interval was|intervals were} cut short by an event of the meter and left out.',
+    'A supply failure or a changed clock explains it.',
+  ),
+  'interval-ends-by-format': told('The format stamps the end of each interval.'),
+  'register-fell': noted(
+    'A register fell at {readings:reading|readings}; the energy of those intervals is not known.',
+    'Ask whether the meter was reset, exchanged or ran over.',
+  ),
+  'register-readings-missing': noted(
+    'Readings of a register are missing before {readings:reading|readings}; the energy between was left out.',
+    'It belongs to no one interval.',
+  ),
+  'sheet-read': told('The record stands in the sheet {sheet}, one of {sheets}.'),
+  'sheets-hidden': noted('The workbook hides: {sheets}.', 'See that the sheet that was read is the one that is meant.'),
+  'parquet-columns-left-out': told('Columns of lists or of types that hold no reading were left out: {columns}.'),
+  'readings-questionable': noted(
+    '{readings:reading is|readings are} marked as questionable or failed a check.',
+    'They were taken as they stand.',
+  ),
+  'samples-taken-as-means': noted(
+    'Values of a moment were taken as means of their interval: {channels}.',
+    'Short peaks and lulls may be missed or overstated.',
+  ),
+  'total-flow-taken': noted(
+    'The file sums both directions of energy: {channels}. All of it was taken as imported.',
+    'Where the site exports, this is too much.',
+  ),
+  'secondary-metered': noted(
+    'The file marks {channels} as the meter’s own, secondary, values.',
+    'Ask whether ratios of instrument transformers are in them.',
+  ),
+  'xml-encoding-misdeclared': told('The file says that it is in {declared} and is in {taken}.'),
+  'espi-joined-by-order': noted(
+    '{entries:entry has|entries have} no links and were joined by their order.',
+    'See that each channel is what it says.',
   ),
   'nem12-time': told('NEM12 keeps its own time, UTC{zone}, all year.'),
   'nem12-header-missing': noted('The NEM12 header record is missing.', 'The file may have been cut.'),

@@ -19,11 +19,22 @@ const OPTIONAL = ['voltageV', 'connectedKvar'] as const;
 export function packRecord(record: LoadRecord): MonthColumn[] {
   const { names, ofInterval } = monthIndex(record.beginS, UTC_TABLE);
   const columns = Object.entries(columnsOf(record));
+  let to = 0;
   return names.flatMap((month, index) => {
-    const from = ofInterval.indexOf(index);
-    const to = ofInterval.lastIndexOf(index) + 1;
-    return columns.map(([quantity, values]) => ({ month, quantity, ...packColumn(values.subarray(from, to)) }));
+    const from = to;
+    const next = ofInterval.indexOf(index + 1, from);
+    to = next < 0 ? ofInterval.length : next;
+    return columns.map(([quantity, values]) => ({
+      month,
+      quantity,
+      ...packColumn(values.subarray(from, to), columnName({ month, quantity })),
+    }));
   });
+}
+
+/** The name a month's column is packed under. */
+export function columnName({ month, quantity }: Pick<MonthColumn, 'month' | 'quantity'>): string {
+  return `${quantity} ${month}`;
 }
 
 function columnsOf(record: LoadRecord): Record<string, Float64Array> {

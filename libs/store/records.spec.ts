@@ -1,6 +1,7 @@
 import { afterEach, beforeEach, describe, expect, it } from 'vitest';
 import { createLoadRecord, type LoadRecord, type RecordSummary, remark } from '#libs/engine/index.js';
 import { databases, type TestDatabase } from '../../test/support/databases.js';
+import { firstForm } from '../../test/support/first-form.js';
 import { readAddress } from './data-source.js';
 import { openConnections, openStore } from './open-store.js';
 import { packRecord } from './pack-record.js';
@@ -71,6 +72,20 @@ for (const { name, available, create } of databases) {
       expect(stored.createdAt.getTime()).toBe(NOW.getTime());
     });
 
+    it('that an earlier version stored is read, to the bit', async () => {
+      const record = awkwardRecord();
+      const months = packRecord(record);
+      const at: Record<string, number> = {};
+      const earlier = months.map(({ month, quantity, intervals, scale }) => {
+        const from = at[quantity] ?? 0;
+        at[quantity] = from + intervals;
+        const values = record[quantity as 'activeKw' | 'standby']!.slice(from, from + intervals);
+        return { month, quantity, ...firstForm(Float64Array.from(values), scale) };
+      });
+      await store.write((manager) => insertRecord(manager, FACTS, record, earlier));
+      expect(await store.read((manager) => readRecord(manager, 'r1'))).toStrictEqual(record);
+    });
+
     it('is stored a month and a quantity a row', async () => {
       await store.write((manager) => insertRecord(manager, FACTS, awkwardRecord()));
       expect(await store.read((manager) => manager.count(RecordColumn))).toBe(7 * 14);
@@ -87,13 +102,14 @@ for (const { name, available, create } of databases) {
       expect(await store.read((manager) => manager.count(RecordColumn))).toBe(0);
     });
 
-    it('leaves rows behind without its transaction, which shows that the test above can fail', async () => {
+    it('leaves a part behind without its transaction, which shows that the test above can fail', async () => {
       const { writer, reader } = await openConnections(readAddress(database.url));
       const months = packRecord(awkwardRecord());
       const broken = { ...months[20]!, month: months[0]!.month, quantity: months[0]!.quantity };
       const columns = [...months.slice(0, 20), broken];
       await expect(insertRecord(writer.manager, FACTS, awkwardRecord(), columns)).rejects.toThrow();
-      expect(await store.read((manager) => manager.count(RecordColumn))).toBe(20);
+      expect(await store.read((manager) => manager.count(StoredRecord))).toBe(1);
+      expect(await store.read((manager) => manager.count(RecordColumn))).toBe(0);
       await new Store({ writer, reader, queue: null }).close();
     });
 
@@ -107,6 +123,19 @@ for (const { name, available, create } of databases) {
       await store.write((manager) => insertRecord(manager, FACTS, awkwardRecord()));
       await store.write((manager) => manager.delete(RecordColumn, { month: '2025-03', quantity: 'activeKw' }));
       await expect(store.read((manager) => readRecord(manager, 'r1'))).rejects.toThrow(/activeKw holds \d+ values/);
+    });
+
+    it('whose months were exchanged in the database is refused', async () => {
+      await store.write((manager) => insertRecord(manager, FACTS, awkwardRecord()));
+      await store.write(async (manager) => {
+        for (const [from, to] of [
+          ['2025-03', 'kept'],
+          ['2025-05', '2025-03'],
+          ['kept', '2025-05'],
+        ] as const)
+          await manager.update(RecordColumn, { month: from, quantity: 'activeKw' }, { month: to });
+      });
+      await expect(store.read((manager) => readRecord(manager, 'r1'))).rejects.toThrow(/activeKw 2025-03 is damaged/);
     });
 
     it('of no known id is null', async () => {

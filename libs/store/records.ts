@@ -1,7 +1,7 @@
 import type { EntityManager } from 'typeorm';
 import { createLoadRecord, type LoadRecord } from '#libs/engine/index.js';
-import { type MonthColumn, packRecord, type RequiredColumn } from './pack-record.js';
-import { unpackColumn } from './packed-column.js';
+import { columnName, type MonthColumn, packRecord, type RequiredColumn } from './pack-record.js';
+import { unpackColumnInto } from './packed-column.js';
 import { RecordColumn } from './record-column.js';
 import { StoredRecord } from './stored-record.js';
 
@@ -10,6 +10,9 @@ export type RecordFacts = Pick<
   StoredRecord,
   'id' | 'siteId' | 'hash' | 'summary' | 'quality' | 'fileName' | 'fileHash' | 'fileBytes' | 'createdAt'
 >;
+
+/** A year of seven columns goes in one; either database takes more than thirty times the parameters this makes. */
+const ROWS_A_STATEMENT = 100;
 
 /**
  * Stores a record with its columns; call it inside one write.
@@ -34,8 +37,12 @@ export async function insertRecord(
     duplicates: record.duplicates,
     notes: [...record.notes],
   });
-  for (const column of columns) {
-    await manager.insert(RecordColumn, { recordId: facts.id, ...column, bytes: Buffer.from(column.bytes) });
+  for (let at = 0; at < columns.length; at += ROWS_A_STATEMENT) {
+    const rows = columns.slice(at, at + ROWS_A_STATEMENT);
+    await manager.insert(
+      RecordColumn,
+      rows.map((column) => ({ recordId: facts.id, ...column, bytes: Buffer.from(column.bytes) })),
+    );
   }
 }
 
@@ -78,7 +85,7 @@ function joined(months: RecordColumn[], intervals: number, quantity: string): Fl
   let at = 0;
   for (const month of months) {
     if (at + month.intervals > intervals) throw new Error(`column ${quantity} holds more than ${intervals} values`);
-    values.set(unpackColumn(month), at);
+    unpackColumnInto(month, columnName(month), values.subarray(at, at + month.intervals));
     at += month.intervals;
   }
   if (at !== intervals) throw new Error(`column ${quantity} holds ${at} values, not ${intervals}`);

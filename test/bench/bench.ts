@@ -1,8 +1,11 @@
-// How fast the program is on this machine: its two hot loops against the same work in C, and one whole plan.
+// How fast the program is on this machine: its hot loops, its reading and its storing of
+// records against the same work in C, and one whole plan.
 import { busesWorks } from './bench-buses.js';
 import { benchPlan } from './bench-plan.js';
+import { benchRead } from './bench-read.js';
 import { scanWork } from './bench-scan.js';
 import { simulationWorks } from './bench-simulate.js';
+import { benchStore } from './bench-store.js';
 import { compareTwins } from './compare-twins.js';
 import { crowding } from './stopwatch.js';
 
@@ -10,7 +13,7 @@ const MOST_CROWDING = 1.15;
 
 const before = await crowding();
 const met = [...simulationWorks(), scanWork(), ...busesWorks()].map((work) => compareTwins(work)?.met ?? true);
-met.push(benchPlan());
+met.push(await benchRead(), await benchStore(), benchPlan());
 const crowded = Math.max(before, await crowding());
 const counts = crowded <= MOST_CROWDING;
 console.log(

@@ -48,7 +48,8 @@ export function compareTwins(work: TwinWork): { ratio: number; met: boolean } | 
 // A compiler may fuse a multiplication with an addition, which rounds once instead of twice.
 const FUSED_ROUNDING = 1e-10;
 
-function insistEqual(title: string, ours: Float64Array, twins: Float64Array): void {
+/** Throws where two lists of results differ by more than a rounding. */
+export function insistEqual(title: string, ours: Float64Array, twins: Float64Array): void {
   if (ours.length !== twins.length) throw new Error(`${title}: ${ours.length} results against ${twins.length}`);
   for (let i = 0; i < ours.length; i++) {
     if (Math.abs(ours[i]! - twins[i]!) <= FUSED_ROUNDING * Math.abs(twins[i]!)) continue;
@@ -56,6 +57,7 @@ function insistEqual(title: string, ours: Float64Array, twins: Float64Array): vo
   }
 }
 
-function ms(ns: number): string {
+/** A time as it is printed. */
+export function ms(ns: number): string {
   return `${(ns / 1e6).toFixed(3)} ms`;
 }

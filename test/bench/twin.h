@@ -3,7 +3,7 @@
 #include <stdlib.h>
 #include <time.h>
 
-static double *read_numbers(const char *path, long *count) {
+__attribute__((unused)) static double *read_numbers(const char *path, long *count) {
   FILE *file = fopen(path, "rb");
   if (!file) { perror(path); exit(1); }
   fseek(file, 0, SEEK_END);

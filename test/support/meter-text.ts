@@ -3,10 +3,14 @@ import { InputProblem } from '#libs/engine/index.js';
 import type { MeterReading, ReadOptions } from '#libs/meter-files/meter-format.js';
 import { readMeterFile } from '#libs/meter-files/read-meter-file.js';
 
-/** A file as a stream of chunks. */
+/** A file as a stream of chunks, each wiped once the one after it is asked for: no reader may count on more. */
 export async function* streamOf(content: string | Uint8Array, chunkBytes = 65_536): AsyncGenerator<Uint8Array> {
   const bytes = typeof content === 'string' ? new TextEncoder().encode(content) : content;
-  for (let at = 0; at < bytes.length; at += chunkBytes) yield bytes.subarray(at, at + chunkBytes);
+  for (let at = 0; at < bytes.length; at += chunkBytes) {
+    const chunk = new Uint8Array(bytes.subarray(at, at + chunkBytes));
+    yield chunk;
+    chunk.fill(0);
+  }
 }
 
 /** Reads a meter file given as text or bytes. */

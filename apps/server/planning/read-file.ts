@@ -1,10 +1,10 @@
 import { createHash } from 'node:crypto';
-import { createReadStream } from 'node:fs';
 import type { MeterMap } from '#libs/contract/meter-map.js';
 import { Question, type QuestionAsked } from '#libs/contract/question.js';
 import { recordBytes } from '#libs/contract/record-hash.js';
 import { type LoadRecord, type RecordSummary, summarizeRecord } from '#libs/engine/index.js';
 import { packAnswer, type WorkerAnswer } from '#libs/jobs/pool/worker-answer.js';
+import { fileChunks } from '#libs/meter-files/file-chunks.js';
 import type { MeterReading } from '#libs/meter-files/meter-format.js';
 import { readMeterFile } from '#libs/meter-files/read-meter-file.js';
 import { recordInWords } from '#libs/present/put-in-words.js';
@@ -45,8 +45,7 @@ export function readFile({ task }: { task: ReadTask }): Promise<WorkerAnswer<Rea
 }
 
 async function readTask({ path, ...options }: ReadTask): Promise<ReadValue> {
-  const source = createReadStream(path, { highWaterMark: 1 << 18 });
-  const { record, quality } = await readMeterFile(source, options);
+  const { record, quality } = await readMeterFile(fileChunks(path), options);
   const summary = recordInWords(summarizeRecord(record));
   return { record, quality, summary, hash: recordHash(record), columns: packRecord(record) };
 }

@@ -113,7 +113,10 @@ function timeProblems(parts: LoadRecordParts): Problem[] {
     return [{ code: 'out-of-range', path: 'intervalS', expected: 'more than 0', found: `${intervalS}`, unit: 's' }];
   }
   const firstS = beginS[0]!;
+  // among whole seconds a step of one interval stays on the grid
+  const whole = [intervalS, firstS, beginS[beginS.length - 1]!].every(Number.isSafeInteger);
   for (let i = 0; i < beginS.length; i++) {
+    if (whole && i > 0 && beginS[i]! - beginS[i - 1]! === intervalS) continue;
     const stepS = i === 0 ? intervalS : beginS[i]! - beginS[i - 1]!;
     const slot = (beginS[i]! - firstS) / intervalS;
     if (!(stepS >= intervalS) || !Number.isSafeInteger(slot)) {
@@ -136,10 +139,19 @@ function valueProblems(parts: LoadRecordParts): Problem[] {
   const problems: Problem[] = [];
   for (const [name, values] of Object.entries(optionalColumns(parts))) {
     if (values === null) continue;
-    const bad = values.findIndex((value) => !Number.isFinite(value) || (value < 0 && !signed.has(name)));
+    const bad = firstBad(values, signed.has(name) ? -Number.MAX_VALUE : 0);
     if (bad < 0) continue;
     const expected = signed.has(name) ? 'a finite number' : 'a finite number, 0 or more';
     problems.push({ code: 'not-finite', path: name, row: bad + 1, expected, found: `${values[bad]}` });
   }
   return problems;
+}
+
+/** Index of the first value that is not finite or below the least there may be, or −1. */
+function firstBad(values: Float64Array | Uint8Array, least: number): number {
+  for (let i = 0; i < values.length; i++) {
+    const value = values[i]!;
+    if (!(value >= least && value <= Number.MAX_VALUE)) return i;
+  }
+  return -1;
 }

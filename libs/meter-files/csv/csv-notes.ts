@@ -51,9 +51,9 @@ function unitNotes(columns: readonly QuantityColumn[], named: Named): Remark[] {
 function sourceNotes({ registers, falls, phases }: CsvSources, { multiplier }: CsvMeaning, named: Named): Remark[] {
   return [
     ...(registers.length > 0 ? [note('registers-differenced', { columns: named(registers) })] : []),
-    ...(falls > 0 ? [note('registers-fall', { intervals: falls })] : []),
+    ...(falls > 0 ? [note('register-fell', { readings: falls })] : []),
     ...(phases.length > 0 ? [note('phases-added', { columns: named(phases) })] : []),
-    ...(multiplier === 1 ? [] : [note('multiplier-applied', { multiplier })]),
+    ...(multiplier === 1 ? [] : [note('values-multiplied', { multiplier })]),
   ];
 }
 

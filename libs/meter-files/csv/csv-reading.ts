@@ -13,10 +13,11 @@ import { csvSources, rawColumns } from './csv-sources.js';
  * Makes a record of the rows under one meaning.
  * @param file what was read
  * @param meaning what its open points are taken to mean
+ * @param only whether the rows are read under no other, so that their columns may become the record's
  * @returns columns and notes
  * @throws InputProblem where the file can't have this meaning
  */
-export function readUnder(file: CsvFile, meaning: CsvMeaning): ReadResult {
+export function readUnder(file: CsvFile, meaning: CsvMeaning, only = false): ReadResult {
   const { reader, map } = file;
   const { missing, estimated, unknown } = reader.qualities.byMeaning(meaning.quality);
   const raw = rawColumns(file, meaning, missing);
@@ -24,7 +25,7 @@ export function readUnder(file: CsvFile, meaning: CsvMeaning): ReadResult {
   const placed = placedRows(file, rules, { values: raw.map(({ values }) => values), keep: meaning.keep });
   const { moments, grid, ends, because, skipped } = placed;
   const { rowNumber } = reader.rows;
-  const found = csvSources(raw, meaning, { grid, utcS: moments.utcS, rowNumber, ends });
+  const found = csvSources(raw, meaning, { grid, utcS: moments.utcS, rowNumber, ends, only });
   const ordered = {
     intervalS: grid.intervalS,
     kept: found.kept,

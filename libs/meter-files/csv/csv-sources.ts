@@ -62,6 +62,8 @@ export interface PlacedRows {
   rowNumber: Int32Array;
   /** stamps mark the ends of intervals */
   ends: boolean;
+  /** no other meaning is looked at, so that columns may be turned into the record's own in place */
+  only: boolean;
 }
 
 /** The sources of a record, and what was done to get them. */
@@ -102,9 +104,11 @@ export function csvSources(raw: readonly RawColumn[], meaning: CsvMeaning, place
   const whole = isWhole(groups);
   const workedOut = whole ? null : workOut(groups, meaning, { ...placed, kept: inner });
   const given = workedOut === null ? [...groups.keys()] : GIVEN_BESIDE;
+  const distinct = new Set(raw.map(({ column }) => column)).size === raw.length;
+  const rest = { intervalS: rows.intervalS, spare: placed.only && distinct && workedOut === null };
   return {
     sources: [
-      ...given.flatMap((quantity) => givenSource(groups.get(quantity), meaning, rows.intervalS)),
+      ...given.flatMap((quantity) => givenSource(groups.get(quantity), meaning, rest)),
       ...(workedOut === null ? [] : workedOutSources(workedOut, groups)),
     ].map((source) => multiplied(source, meaning.multiplier)),
     kept: inner,
@@ -143,14 +147,18 @@ function isWhole(groups: Groups): boolean {
 /** Quantities that are taken as they are even where others are worked out. */
 const GIVEN_BESIDE: readonly CsvQuantity[] = ['voltage', 'connected', 'standby'];
 
-function givenSource(group: RawColumn[] | undefined, { choice }: CsvMeaning, intervalS: number): QuantitySource[] {
+function givenSource(
+  group: RawColumn[] | undefined,
+  { choice }: CsvMeaning,
+  { intervalS, spare }: { intervalS: number; spare: boolean },
+): QuantitySource[] {
   const [first] = group ?? [];
   if (group === undefined || first === undefined) return [];
   const { quantity, column } = first;
   if (quantity === 'apparent' || quantity === 'powerFactor' || quantity === 'current') return [];
   if (quantity === 'voltage' && group.length > 1) return [];
   const line = quantity === 'voltage' && choice.between === 'lineToNeutral' ? Math.sqrt(3) : 1;
-  const source = { quantity, column: column + 1, energy: first.unit.energy, over: first.unit.over };
+  const source = { quantity, column: column + 1, energy: first.unit.energy, over: first.unit.over, spare };
   if (group.length === 1) return [{ ...source, values: first.values, times: first.unit.times * line }];
   if (group.every(({ unit }) => sameUnit(unit, first.unit))) {
     return [{ ...source, values: sumOf(group.map(({ values }) => values)), times: first.unit.times }];

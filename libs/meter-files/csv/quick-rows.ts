@@ -20,22 +20,35 @@ const ZERO = 0x30;
 const NO_BYTE = 0x100;
 const DATE_BYTES = 10;
 const MOST_DIGITS = 9;
+/** Rows at a time: short turns let the engine change to better code soon after it has made it. */
+const TURN_ROWS = 512;
 
 const YEAR_FIRST = /^\d{4}[-/.]\d\d[-/.]\d\d[ T]\d\d:\d\d(:\d\d)?(?:Z|[+-]\d\d:?\d\d)?$/;
 const YEAR_LAST = /^\d\d[-/.]\d\d[-/.]\d{4}[ T]\d\d:\d\d(:\d\d)?$/;
 
 /** The stamp of the row before, as the form that the next has to have. */
-interface StampForm {
-  /** bytes of the stamp; the places of digits are given below */
-  bytes: Uint8Array;
-  /** where the year and the two other parts begin, and where the marks between them stand */
-  year: number;
-  first: number;
-  second: number;
-  marks: readonly [number, number];
+class StampForm {
+  readonly bytes: Uint8Array;
   /** length of date and clock, without what follows them */
-  length: number;
-  offsetS: number;
+  readonly length: number;
+  readonly offsetS: number;
+  /** where the year and the two other parts begin, and where the marks between them stand */
+  readonly year: number;
+  readonly first: number;
+  readonly second: number;
+  readonly oneMark: number;
+  readonly otherMark: number;
+
+  constructor(text: string, yearFirst: boolean, offsetS: number) {
+    this.bytes = new TextEncoder().encode(text);
+    this.length = text[16] === ':' ? 19 : 16;
+    this.offsetS = offsetS;
+    this.year = yearFirst ? 0 : 6;
+    this.first = yearFirst ? 5 : 0;
+    this.second = yearFirst ? 8 : 3;
+    this.oneMark = yearFirst ? 4 : 2;
+    this.otherMark = yearFirst ? 7 : 5;
+  }
 }
 
 /** What the quick lane needs to know of a file. */
@@ -59,10 +72,18 @@ export class QuickRows {
   readonly #plan: QuickPlan;
   readonly #actions: Int32Array;
   #form: StampForm | null = null;
-  // the stamp read last, and where in the buffer its date stands
+  // the stamp read last
   #dateKey = 0;
   #clockS = 0;
-  #dateAt = -1;
+  // its bytes up to the minute as numbers, those behind the minute, and what both are worth [s]
+  #bytes0 = 0;
+  #bytes4 = 0;
+  #bytes8 = 0;
+  #bytes12 = 0;
+  #bytes16 = 0;
+  #byte18 = 0;
+  #hourS = 0;
+  #secondS = 0;
 
   constructor(rows: StampedRows, plan: QuickPlan) {
     this.#rows = rows;
@@ -82,18 +103,12 @@ export class QuickRows {
   learn(cells: RowCells): void {
     const { stamp } = this.#plan;
     const text = cells.quoting[stamp] === 0 ? cells.text(stamp) : '';
-    const yearFirst = YEAR_FIRST.exec(text);
-    const parts = yearFirst ?? YEAR_LAST.exec(text);
+    const yearFirst = YEAR_FIRST.test(text);
     this.#form = null;
-    if (parts === null || cells.to[stamp]! - cells.from[stamp]! !== text.length) return;
-    this.#form = {
-      ...(yearFirst === null
-        ? { first: 0, second: 3, year: 6, marks: [2, 5] as const }
-        : { year: 0, first: 5, second: 8, marks: [4, 7] as const }),
-      bytes: new TextEncoder().encode(text),
-      length: parts[1] === undefined ? 16 : 19,
-      offsetS: this.#rows.offsetS?.[this.#rows.count - 1] ?? 0,
-    };
+    this.#bytes0 = 0;
+    if (!yearFirst && !YEAR_LAST.test(text)) return;
+    if (cells.to[stamp]! - cells.from[stamp]! !== text.length) return;
+    this.#form = new StampForm(text, yearFirst, this.#rows.offsetS?.[this.#rows.count - 1] ?? 0);
   }
 
   /**
@@ -101,29 +116,35 @@ export class QuickRows {
    * @param buffer whole and broken rows
    * @param sign decimal mark, or null where numbers with a mark have to wait
    */
-  // biome-ignore lint/complexity/noExcessiveCognitiveComplexity: the kernel that every byte of a usual file runs through
-  // biome-ignore lint/complexity/noExcessiveLinesPerFunction: the same
   takeFrom(buffer: RowBuffer, sign: DecimalSign | null): void {
     const form = this.#form;
-    const { delimiter, width } = this.#plan;
     if (form === null || buffer.rowEnd !== LF || buffer.end === buffer.start) return;
-    const { bytes } = buffer;
-    const rows = this.#rows;
-    const actions = this.#actions;
+    const { delimiter } = this.#plan;
     const markByte = sign === null || sign.charCodeAt(0) === delimiter ? NO_BYTE : sign.charCodeAt(0);
-    const limit = bytes.lastIndexOf(LF, buffer.end - 1) + 1;
-    let { dateKey: dateKeys, clockS: clocks, rowNumber: rowNumbers, offsetS: offsets, values } = rows;
-    let room = rowNumbers.length;
+    const limit = buffer.bytes.lastIndexOf(LF, buffer.end - 1) + 1;
+    const rows = this.#rows;
+    while (buffer.start < limit) {
+      if (rows.count === MAX_INTERVALS) return;
+      if (rows.count === rows.rowNumber.length) rows.grow();
+      if (!this.#takeTurn(buffer, form, limit, markByte)) return;
+    }
+  }
+
+  /** Reads rows until the turn is over, and says so; or until one is not of the usual shape. */
+  // biome-ignore lint/complexity/noExcessiveCognitiveComplexity: the kernel that every byte of a usual file runs through
+  // biome-ignore lint/complexity/noExcessiveLinesPerFunction: the same
+  #takeTurn(buffer: RowBuffer, form: StampForm, limit: number, markByte: number): boolean {
+    const { delimiter, width } = this.#plan;
+    const { bytes, view } = buffer;
+    const actions = this.#actions;
+    const { dateKey: dateKeys, clockS: clocks, rowNumber: rowNumbers, offsetS: offsets, values } = this.#rows;
+    const { count } = this.#rows;
+    const room = Math.min(rowNumbers.length, count + TURN_ROWS);
+    const spanS = this.#rows.spanS;
     let at = buffer.start;
-    this.#dateAt = -1;
-    while (at < limit) {
-      const index = rows.count;
-      if (index === MAX_INTERVALS) return;
-      if (index === room) {
-        rows.grow();
-        ({ dateKey: dateKeys, clockS: clocks, rowNumber: rowNumbers, offsetS: offsets, values } = rows);
-        room = rowNumbers.length;
-      }
+    let index = count;
+    let rowNumber = buffer.rowsBefore;
+    for (; index < room && at < limit; index++) {
       let dateKey = -1;
       let clockS = 0;
       let endKey = -1;
@@ -137,29 +158,31 @@ export class QuickRows {
           if (negative) to++;
           const from = to;
           let digits = 0;
+          // more than nine digits leave the 32 bits, and are left to the general reader
           for (let digit = bytes[to]! - ZERO; digit >= 0 && digit <= 9; digit = bytes[++to]! - ZERO) {
-            digits = digits * 10 + digit;
+            digits = (Math.imul(digits, 10) + digit) | 0;
           }
           let count = to - from;
-          let value = digits;
+          let tenths = 0;
           if (bytes[to] === markByte) {
             const behind = ++to;
             for (let digit = bytes[to]! - ZERO; digit >= 0 && digit <= 9; digit = bytes[++to]! - ZERO) {
-              digits = digits * 10 + digit;
+              digits = (Math.imul(digits, 10) + digit) | 0;
             }
-            if (to === behind) break;
-            count = to - from - 1;
-            if (count > MOST_DIGITS) break;
-            value = digits / TENTHS[to - behind]!;
+            tenths = to - behind;
+            if (tenths === 0) break;
+            count += tenths;
           }
           if (count === 0 || count > MOST_DIGITS) break;
-          values[action - NUMBER]![index] = negative && value !== 0 ? -value : value;
+          const value = digits / TENTHS[tenths]!;
+          values[action - NUMBER]![index] = negative && digits !== 0 ? -value : value;
         } else if (action === PASS) {
           if (bytes[to] === QUOTE) break;
           while (bytes[to] !== delimiter && bytes[to] !== LF) to++;
         } else {
-          to = this.#stampAt(bytes, to, form);
-          if (to < 0) break;
+          if (to + form.bytes.length > limit) break;
+          if (!this.#isSameHour(view, to, form) && !this.#isStampAt(bytes, view, to, form)) break;
+          to += form.bytes.length;
           if (action === STAMP) {
             dateKey = this.#dateKey;
             clockS = this.#clockS;
@@ -176,47 +199,61 @@ export class QuickRows {
       if (column < width) break;
       if (bytes[to] === CR) to++;
       if (bytes[to] !== LF) break;
-      if (endKey >= 0 && (endKey !== dateKey || endS - clockS !== rows.spanS)) break;
+      if (endKey >= 0 && (endKey !== dateKey || endS - clockS !== spanS)) break;
       dateKeys[index] = dateKey;
       clocks[index] = clockS;
       if (offsets !== null) offsets[index] = form.offsetS;
-      rowNumbers[index] = ++buffer.rowsBefore;
-      rows.count = index + 1;
+      rowNumbers[index] = ++rowNumber;
       at = to + 1;
-      buffer.start = at;
     }
+    this.#rows.count = index;
+    buffer.rowsBefore = rowNumber;
+    buffer.start = at;
+    return index === room;
   }
 
-  /** Reads a stamp of the given form; sets date and clock and returns the byte behind it, or −1. */
-  #stampAt(bytes: Uint8Array, at: number, form: StampForm): number {
-    if (!this.#isSameDate(bytes, at) && !this.#isNewDate(bytes, at, form)) return -1;
-    const hours = twoDigits(bytes, at + 11);
-    const minutes = twoDigits(bytes, at + 14);
-    const seconds = form.length === 19 ? twoDigits(bytes, at + 17) : 0;
-    if (!(hours >= 0 && hours < 24 && minutes >= 0 && minutes < 60 && seconds >= 0 && seconds < 60)) return -1;
-    if (bytes[at + DATE_BYTES] !== form.bytes[DATE_BYTES] || bytes[at + 13] !== form.bytes[13]) return -1;
-    if (form.length === 19 && bytes[at + 16] !== form.bytes[16]) return -1;
-    for (let i = form.length; i < form.bytes.length; i++) if (bytes[at + i] !== form.bytes[i]) return -1;
-    this.#clockS = hours * 3600 + minutes * 60 + seconds;
-    return at + form.bytes.length;
-  }
-
-  #isNewDate(bytes: Uint8Array, at: number, form: StampForm): boolean {
-    const year = twoDigits(bytes, at + form.year) * 100 + twoDigits(bytes, at + form.year + 2);
-    const first = twoDigits(bytes, at + form.first);
-    const second = twoDigits(bytes, at + form.second);
-    const [one, other] = form.marks;
-    if (!(year >= 0 && first >= 0 && second >= 0)) return false;
-    if (bytes[at + one] !== form.bytes[one] || bytes[at + other] !== form.bytes[other]) return false;
-    this.#dateKey = year * 10_000 + first * 100 + second;
-    this.#dateAt = at;
+  /** Whether a stamp differs from the one read last in its minute alone; most do. */
+  #isSameHour(view: DataView, at: number, form: StampForm): boolean {
+    if (view.getInt32(at, true) !== this.#bytes0 || view.getInt32(at + 4, true) !== this.#bytes4) return false;
+    if (view.getInt32(at + 8, true) !== this.#bytes8 || view.getInt16(at + 12, true) !== this.#bytes12) return false;
+    const tens = view.getUint8(at + 14) - ZERO;
+    const ones = view.getUint8(at + 15) - ZERO;
+    if (!(tens >= 0 && tens <= 5 && ones >= 0 && ones <= 9)) return false;
+    const { length, bytes } = form;
+    if (length === 19) {
+      if (view.getInt16(at + 16, true) !== this.#bytes16 || view.getUint8(at + 18) !== this.#byte18) return false;
+    }
+    for (let i = length; i < bytes.length; i++) if (view.getUint8(at + i) !== bytes[i]) return false;
+    this.#clockS = this.#hourS + (tens * 10 + ones) * 60 + this.#secondS;
     return true;
   }
 
-  #isSameDate(bytes: Uint8Array, at: number): boolean {
-    const before = this.#dateAt;
-    if (before < 0) return false;
-    for (let i = DATE_BYTES - 1; i >= 0; i--) if (bytes[at + i] !== bytes[before + i]) return false;
+  /** Reads a stamp of the given form into date and clock. */
+  #isStampAt(bytes: Uint8Array, view: DataView, at: number, form: StampForm): boolean {
+    const { bytes: known, length, oneMark, otherMark } = form;
+    const year = twoDigits(bytes, at + form.year) * 100 + twoDigits(bytes, at + form.year + 2);
+    const first = twoDigits(bytes, at + form.first);
+    const second = twoDigits(bytes, at + form.second);
+    if (!(year >= 0 && first >= 0 && second >= 0)) return false;
+    const hours = twoDigits(bytes, at + 11);
+    const minutes = twoDigits(bytes, at + 14);
+    const seconds = length === 19 ? twoDigits(bytes, at + 17) : 0;
+    if (!(hours >= 0 && hours < 24 && minutes >= 0 && minutes < 60 && seconds >= 0 && seconds < 60)) return false;
+    if (bytes[at + oneMark] !== known[oneMark] || bytes[at + otherMark] !== known[otherMark]) return false;
+    if (bytes[at + DATE_BYTES] !== known[DATE_BYTES] || bytes[at + 13] !== known[13]) return false;
+    if (length === 19 && bytes[at + 16] !== known[16]) return false;
+    for (let i = length; i < known.length; i++) if (bytes[at + i] !== known[i]) return false;
+    this.#dateKey = year * 10_000 + first * 100 + second;
+    this.#clockS = hours * 3600 + minutes * 60 + seconds;
+    this.#bytes0 = view.getInt32(at, true);
+    this.#bytes4 = view.getInt32(at + 4, true);
+    this.#bytes8 = view.getInt32(at + 8, true);
+    this.#bytes12 = view.getInt16(at + 12, true);
+    this.#hourS = hours * 3600;
+    this.#secondS = seconds;
+    if (length < 19) return true;
+    this.#bytes16 = view.getInt16(at + 16, true);
+    this.#byte18 = view.getUint8(at + 18);
     return true;
   }
 }

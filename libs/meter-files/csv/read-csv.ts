@@ -45,12 +45,15 @@ interface Read {
 async function meterRead(buffer: RowBuffer, file: Omit<CsvFile, 'reader'>, lane: Lane): Promise<Read> {
   const { layout, map } = file;
   const rows = new MeterRows(layout, map);
-  await readRows(buffer, layout, rows, lane === 'general' ? null : rows.first);
+  await readRows(buffer, layout, rows, {
+    quickReader: lane === 'general' ? null : rows.first,
+    sizeBytes: file.options.sizeBytes ?? 0,
+  });
   const { readers, meters } = rows.close();
   const [reader] = readers.values();
   if (reader === undefined || reader.rows.count === 0) refuseEmpty();
   if (readers.size > 1) askWhichMeter(file, readers, meters);
-  const notes = map.meter === undefined ? [] : [note('meters-left-out', { meter: map.meter, others: meters - 1 })];
+  const notes = map.meter === undefined ? [] : [note('meter-chosen', { meter: map.meter, others: meters - 1 })];
   return { file: { ...file, reader }, notes };
 }
 
@@ -58,7 +61,7 @@ async function meterRead(buffer: RowBuffer, file: Omit<CsvFile, 'reader'>, lane:
 async function daysRead(buffer: RowBuffer, { layout, map, options }: Omit<CsvFile, 'reader'>): Promise<Read> {
   const days = layout.days!;
   const reader = new DayRows(layout, days, map);
-  await readRows(buffer, layout, reader, null);
+  await readRows(buffer, layout, reader, { quickReader: null, sizeBytes: 0 });
   const notes = [
     note('days-in-columns', { columns: days.slots.length }),
     ...(days.mark === null ? [note('stamps-assumed-beginnings', {})] : []),
@@ -133,16 +136,23 @@ async function readRows(
   buffer: RowBuffer,
   layout: CsvLayout,
   taker: RowTaker,
-  quickReader: RowReader | null,
+  { quickReader, sizeBytes }: { quickReader: RowReader | null; sizeBytes: number },
 ): Promise<void> {
   const plan = quickReader?.quickPlan() ?? null;
   const quick = plan === null || quickReader === null ? null : new QuickRows(quickReader.rows, plan);
   const lanes = { taker, quickReader, quick, cells: new RowCells() };
   do {
     takeRows(buffer, layout, lanes);
+    const rows = quickReader?.rows;
+    if (rows !== undefined) rows.likelyRows = likelyRows(rows.count, buffer.takenBytes, sizeBytes);
     if (buffer.end - buffer.start > LONGEST_ROW_BYTES) buffer.refuseEndlessRow();
   } while (await buffer.more());
   if (buffer.end > buffer.start) refuseOpenQuote(buffer.rowsBefore + 1);
+}
+
+/** Rows of the whole file if it goes on as it began, with a little to spare. */
+function likelyRows(rows: number, takenBytes: number, sizeBytes: number): number {
+  return takenBytes > 0 ? Math.ceil((rows / takenBytes) * sizeBytes * 1.03) : 0;
 }
 
 interface Lanes {

@@ -12,6 +12,8 @@ const FIRST_BYTES = 98_304;
  */
 export class RowBuffer {
   bytes = new Uint8Array(FIRST_BYTES);
+  /** the same bytes, several at a time */
+  view = new DataView(this.bytes.buffer);
   start = 0;
   end = 0;
   /** rows that lie before `start` */
@@ -20,6 +22,7 @@ export class RowBuffer {
   readonly rowEnd: number;
   readonly #source: MeterBytes;
   #ended = false;
+  #gotBytes = 0;
 
   constructor(source: MeterBytes) {
     this.#source = source;
@@ -28,6 +31,11 @@ export class RowBuffer {
 
   get ended(): boolean {
     return this.#ended;
+  }
+
+  /** Bytes of the file that lie before `start`. */
+  get takenBytes(): number {
+    return this.#gotBytes - (this.end - this.start);
   }
 
   /**
@@ -63,10 +71,12 @@ export class RowBuffer {
 
   #append(chunk: Uint8Array): void {
     const kept = this.end - this.start;
+    this.#gotBytes += chunk.length;
     if (kept + chunk.length > this.bytes.length) {
       const larger = new Uint8Array(Math.max(2 * this.bytes.length, kept + chunk.length));
       larger.set(this.bytes.subarray(this.start, this.end));
       this.bytes = larger;
+      this.view = new DataView(larger.buffer);
     } else if (this.start > 0) {
       this.bytes.copyWithin(0, this.start, this.end);
     }

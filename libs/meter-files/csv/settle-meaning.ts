@@ -120,9 +120,10 @@ function factorSigns({ layout, reader, map }: CsvFile): PowerFactorSign[] {
 function settledAmong(file: CsvFile, points: OpenPoints): ReadResult {
   const attempts: Attempt[] = [];
   let failure: unknown;
-  for (const meaning of meanings(points)) {
+  const all = meanings(points);
+  for (const meaning of all) {
     try {
-      attempts.push({ meaning, result: readUnder(file, meaning) });
+      attempts.push({ meaning, result: readUnder(file, meaning, all.length === 1) });
     } catch (problem) {
       if (!(problem instanceof InputProblem)) throw problem;
       failure ??= problem;

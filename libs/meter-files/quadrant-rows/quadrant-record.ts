@@ -57,7 +57,7 @@ export function quadrantRecord(reader: QuadrantReader, options: ReadOptions, mea
     ...(built.withoutValue > 0 ? [note('intervals-without-value', { intervals: built.withoutValue })] : []),
     note('file-read-as', { format: 'quadrant-rows', columns: `season flag; ${ENERGIES.join('; ')}` }),
     note('quadrants-added', {}),
-    ...(map.multiplier === undefined ? [] : [note('multiplier-applied', { multiplier: map.multiplier })]),
+    ...(map.multiplier === undefined ? [] : [note('values-multiplied', { multiplier: map.multiplier })]),
   ];
   const counts = {
     format: 'quadrant-rows',

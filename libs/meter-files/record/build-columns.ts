@@ -25,6 +25,8 @@ export interface QuantitySource {
   over: number;
   /** column of the file, counted from 1; 0 where the format has none */
   column: number;
+  /** whether nobody needs the values afterwards, so that they may be turned into the record's own in place */
+  spare?: boolean;
 }
 
 /** The columns of a record, one entry a valid interval, in time order. */
@@ -76,9 +78,8 @@ export function buildColumns(
   leadingPositive = false,
 ): BuiltColumns {
   const valid = validRows(rows.kept, sources);
+  refuseNegative(rows, valid, sources);
   const n = valid.length;
-  const beginS = new Float64Array(n);
-  for (let i = 0; i < n; i++) beginS[i] = rows.utcS[valid[i]!]! - rows.shiftS;
   const of = (quantity: Quantity) =>
     taken(
       rows,
@@ -86,17 +87,17 @@ export function buildColumns(
       sources.find((source) => source.quantity === quantity),
     );
   const exported = of('exported');
-  const activeKw = of('active') ?? new Float64Array(n);
-  if (exported !== null) for (let i = 0; i < n; i++) activeKw[i]! -= exported[i]!;
+  const imported = of('active') ?? new Float64Array(n);
+  if (exported !== null) for (let i = 0; i < n; i++) exported[i] = imported[i]! - exported[i]!;
+  const activeKw = exported ?? imported;
   const signed = of('reactive');
-  const lagging = of('lagging') ?? new Float64Array(n);
-  const leading = of('leading') ?? new Float64Array(n);
+  const lagging = (signed === null ? of('lagging') : null) ?? new Float64Array(n);
+  const leading = (signed === null ? of('leading') : null) ?? new Float64Array(n);
   const negativeReactive = signed === null ? 0 : split(signed, lagging, leading, leadingPositive);
   const standby = of('standby');
-  refuseNegative(rows, valid, sources);
   const columns: RecordColumns = {
     intervalS: rows.intervalS,
-    beginS,
+    beginS: beginnings(rows, valid),
     activeKw,
     laggingKvar: lagging,
     leadingKvar: leading,
@@ -121,32 +122,60 @@ function validRows(kept: Int32Array, sources: readonly QuantitySource[]): Int32A
 }
 
 function hasGap(kept: Int32Array, values: Float64Array): boolean {
+  if (!values.includes(Number.NaN)) return false;
   for (let i = 0; i < kept.length; i++) if (Number.isNaN(values[kept[i]!]!)) return true;
   return false;
 }
 
-function taken(rows: OrderedRows, valid: Int32Array, source: QuantitySource | undefined): Float64Array | null {
-  if (source === undefined) return null;
-  const { values, times, over, energy } = source;
-  const { intervalS } = rows;
+function beginnings({ utcS, shiftS }: OrderedRows, valid: Int32Array): Float64Array {
+  if (shiftS === 0) return picked(utcS, valid);
+  const beginS = new Float64Array(valid.length);
+  for (let i = 0; i < valid.length; i++) beginS[i] = utcS[valid[i]!]! - shiftS;
+  return beginS;
+}
+
+/** More room than this behind the values of a column is not worth keeping for the sake of a copy saved. */
+const MOST_ROOM = 1.1;
+
+/** The values of the valid rows: the column itself where every row is, since nobody writes to it any more. */
+function picked(values: Float64Array, valid: Int32Array): Float64Array {
+  if (values.buffer.byteLength <= MOST_ROOM * values.byteLength && isEveryRow(valid, values.length)) return values;
   const column = new Float64Array(valid.length);
   for (let i = 0; i < valid.length; i++) column[i] = values[valid[i]!]!;
-  if (times !== 1 || over !== 1) for (let i = 0; i < column.length; i++) column[i] = (column[i]! * times) / over;
-  // kW = kWh · 3600 ÷ intervalS
-  if (energy) for (let i = 0; i < column.length; i++) column[i] = (column[i]! * 3600) / intervalS;
   return column;
 }
 
-/** lagging = max(Q, 0), leading = max(−Q, 0) */
+function isEveryRow(valid: Int32Array, rows: number): boolean {
+  if (valid.length !== rows) return false;
+  for (let i = 0; i < rows; i++) if (valid[i] !== i) return false;
+  return true;
+}
+
+function taken(rows: OrderedRows, valid: Int32Array, source: QuantitySource | undefined): Float64Array | null {
+  if (source === undefined) return null;
+  const { values, times, over, energy, quantity } = source;
+  const { intervalS } = rows;
+  const whole = picked(values, valid);
+  // what is exported is written to
+  const isOwn = whole !== values || source.spare === true;
+  if (times === 1 && over === 1 && !energy && (isOwn || quantity !== 'exported')) return whole;
+  // kW = kWh · 3600 ÷ intervalS
+  const hourS = energy ? 3600 : 1;
+  const lengthS = energy ? intervalS : 1;
+  const column = isOwn ? whole : new Float64Array(valid.length);
+  for (let i = 0; i < column.length; i++) column[i] = (((whole[i]! * times) / over) * hourS) / lengthS;
+  return column;
+}
+
+/** lagging = max(Q, 0), leading = max(−Q, 0), both 0 where they come in */
 function split(signed: Float64Array, lagging: Float64Array, leading: Float64Array, leadingPositive: boolean): number {
   let negative = 0;
   for (let i = 0; i < signed.length; i++) {
     const value = signed[i]!;
     if (value < 0) negative++;
     const kvar = leadingPositive ? -value : value;
-    // adding 0 makes −0 and 0 one value
-    lagging[i] = Math.max(kvar, 0) + 0;
-    leading[i] = Math.max(-kvar, 0) + 0;
+    if (kvar > 0) lagging[i] = kvar;
+    else if (kvar < 0) leading[i] = -kvar;
   }
   return negative;
 }

@@ -60,9 +60,10 @@ export function qualityOf(record: LoadRecord, counts: ReadCounts, zone: ZoneTabl
   };
 }
 
-function missingSpans({ beginS, intervalS }: LoadRecord): { first: MissingSpan[]; count: number } {
+function missingSpans({ beginS, intervalS, missing }: LoadRecord): { first: MissingSpan[]; count: number } {
   const first: MissingSpan[] = [];
   let count = 0;
+  if (missing === 0) return { first, count };
   for (let i = 1; i < beginS.length; i++) {
     const fromS = beginS[i - 1]! + intervalS;
     if (fromS >= beginS[i]!) continue;
@@ -77,15 +78,13 @@ const SEASONS = ['Dec-Feb', 'Mar-May', 'Jun-Aug', 'Sep-Nov'] as const;
 
 function seasonsMissing({ beginS, intervalS }: LoadRecord, zone: ZoneTable) {
   const coveredS = [0, 0, 0, 0];
-  let untilS = Number.NEGATIVE_INFINITY;
-  let season = 0;
-  for (let i = 0; i < beginS.length; i++) {
-    // the season is looked up once an hour
-    if (beginS[i]! >= untilS) {
-      season = Math.floor((localTime(zone, beginS[i]!).month % 12) / 3);
-      untilS = beginS[i]! + 3600;
-    }
-    coveredS[season]! += intervalS;
+  for (let i = 0; i < beginS.length; ) {
+    // the season is looked up once a day
+    const { month, secondOfDay } = localTime(zone, beginS[i]!);
+    const untilS = beginS[i]! + DAY_S - secondOfDay;
+    const from = i;
+    while (i < beginS.length && beginS[i]! < untilS) i++;
+    coveredS[Math.floor((month % 12) / 3)]! += (i - from) * intervalS;
   }
   return SEASONS.filter((_, index) => coveredS[index]! < SEASON_DAYS * DAY_S);
 }

@@ -31,10 +31,11 @@ interface Change {
  * @param newestFirst whether the file runs backwards
  * @param table the zone's offsets, over the whole span
  * @param ends whether the stamps mark the ends of intervals: the moment of a change may then be written either way
- * @returns times in UTC, aligned with `clock`
+ * @returns times in UTC, aligned with `clock`; the same array where clocks show UTC
  */
 export function localToUtc(clock: Float64Array, newestFirst: boolean, table: ZoneTable, ends: boolean): UtcTimes {
   const changes = changesOf(table);
+  if (changes.length === 0) return { utcS: shifted(clock, table.offsetS[0]!), doubledRows: 0, onceRows: 0 };
   const result: UtcTimes = { utcS: new Float64Array(clock.length), doubledRows: 0, onceRows: 0 };
   const n = clock.length;
   let clear = clearTimes(changes, table, Number.NEGATIVE_INFINITY);
@@ -48,6 +49,10 @@ export function localToUtc(clock: Float64Array, newestFirst: boolean, table: Zon
   }
   for (const change of changes) if (change.rows.length > 0) tellApart(change, clock, result);
   return result;
+}
+
+function shifted(clock: Float64Array, offsetS: number): Float64Array {
+  return offsetS === 0 ? clock : clock.map((localS) => localS - offsetS);
 }
 
 /** Clock times between two changes, clear of both: they need no thought. */

@@ -93,7 +93,7 @@ export function showsEnds(
   grid: { first: number; last: number; intervalS: number },
 ): string | null {
   if (moments.notes.some(({ code }) => code === 'midnight-under-ending-day')) return 'midnight under the ending day';
-  for (let i = 0; i < rows.count; i++) if (rows.clockS[i] === DAY_S) return 'a stamp of 24:00';
+  if (rows.clockS.subarray(0, rows.count).includes(DAY_S)) return 'a stamp of 24:00';
   const firstS = moments.clock[grid.first]!;
   const lastS = moments.clock[grid.last]!;
   const atMidnight = (localS: number) => ((localS % DAY_S) + DAY_S) % DAY_S === 0;
@@ -111,6 +111,7 @@ export function showsEnds(
  * @throws InputProblem naming the row
  */
 export function skippedRows(rows: StampedRows, moments: Moments, holdsValue: (row: number) => boolean): number {
+  if (!moments.utcS.includes(Number.NaN)) return 0;
   let skipped = 0;
   for (let i = 0; i < rows.count; i++) {
     if (!Number.isNaN(moments.utcS[i]!)) continue;

@@ -23,6 +23,8 @@ export class StampedRows {
   /** row of the file, counted from 1 */
   rowNumber = new Int32Array(FIRST_ROWS);
   values: Float64Array[];
+  /** rows the file will have as far as its size tells, 0 where it does not: room is made for all of them at once */
+  likelyRows = 0;
   /** length of an interval as far as rows with a begin and an end state it [s]; NaN where none does */
   spanS = Number.NaN;
 
@@ -48,7 +50,8 @@ export class StampedRows {
   /** Makes room for more rows. */
   grow(): void {
     const have = this.rowNumber.length;
-    const rows = Math.min(have < FEW_ROWS ? 4 * have : 2 * have, MAX_INTERVALS);
+    const more = have < FEW_ROWS ? 4 * have : 2 * have;
+    const rows = Math.min(this.likelyRows > have ? this.likelyRows : more, MAX_INTERVALS);
     this.dateKey = larger(this.dateKey, new Int32Array(rows));
     this.clockS = larger(this.clockS, new Int32Array(rows));
     this.rowNumber = larger(this.rowNumber, new Int32Array(rows));

@@ -119,7 +119,7 @@ describe('quantities', () => {
         kw: [40, 82, 40, 40],
         lagging: [20, 0, 10, 4],
         missing: 3,
-        notes: ['registers-differenced', 'registers-fall'],
+        notes: ['registers-differenced', 'register-fell'],
       },
     ],
   ])('%s: %s', async (name, _why, expected) => {

@@ -1,0 +1,143 @@
+import { InputProblem } from '#libs/engine/index.js';
+import type { MeterChannel } from './meter-channel.js';
+
+/** Which of two values for one moment counts. */
+export type Keep = 'first' | 'last';
+
+/** The points of a channel in time order, one a moment. */
+export interface ChannelPoints {
+  beginS: Float64Array;
+  values: Float64Array;
+  rowNumber: Int32Array;
+  /** points dropped because another of the same moment says the same */
+  duplicates: number;
+  /** points of a moment that has another value already */
+  conflicts: number;
+  /** row of the first of them, 0 where there is none */
+  conflictRow: number;
+}
+
+/**
+ * Puts the points of a channel in time order.
+ * @param channel as read
+ * @param keep which of two different values for one moment counts
+ */
+export function orderedPoints(channel: MeterChannel, keep: Keep): ChannelPoints {
+  const { count, beginS, values, rowNumber } = channel;
+  const order = new Int32Array(count);
+  let sorted = true;
+  for (let i = 0; i < count; i++) {
+    order[i] = i;
+    if (i > 0 && beginS[i]! <= beginS[i - 1]!) sorted = false;
+  }
+  // points of one moment stay in the order of the file
+  if (!sorted) order.sort((a, b) => beginS[a]! - beginS[b]! || a - b);
+  const points: ChannelPoints = {
+    beginS: new Float64Array(count),
+    values: new Float64Array(count),
+    rowNumber: new Int32Array(count),
+    duplicates: 0,
+    conflicts: 0,
+    conflictRow: 0,
+  };
+  let kept = 0;
+  for (const index of order) {
+    if (kept > 0 && points.beginS[kept - 1] === beginS[index]) {
+      if (!settleRepeat(points, kept - 1, { value: values[index]!, row: rowNumber[index]! })) continue;
+      if (keep === 'first') continue;
+      kept--;
+    }
+    points.beginS[kept] = beginS[index]!;
+    points.values[kept] = values[index]!;
+    points.rowNumber[kept] = rowNumber[index]!;
+    kept++;
+  }
+  points.beginS = points.beginS.subarray(0, kept);
+  points.values = points.values.subarray(0, kept);
+  points.rowNumber = points.rowNumber.subarray(0, kept);
+  return points;
+}
+
+/** Counts a second value for a moment; true where it is another one. */
+function settleRepeat(points: ChannelPoints, at: number, { value, row }: { value: number; row: number }): boolean {
+  if (Object.is(points.values[at], value) || points.values[at] === value) {
+    points.duplicates++;
+    return false;
+  }
+  points.conflicts++;
+  if (points.conflictRow === 0 || row < points.conflictRow) points.conflictRow = row;
+  return true;
+}
+
+/**
+ * The commonest step between neighbouring points, the shorter of two equally common ones.
+ * @param points in time order
+ * @param name of the channel, for the message
+ * @throws InputProblem where there are fewer than two points
+ */
+export function commonestStepS({ beginS, rowNumber }: ChannelPoints, name: string): number {
+  const counts = new Map<number, number>();
+  for (let i = 1; i < beginS.length; i++) {
+    const stepS = beginS[i]! - beginS[i - 1]!;
+    counts.set(stepS, (counts.get(stepS) ?? 0) + 1);
+  }
+  let best = Number.NaN;
+  let most = 0;
+  for (const [stepS, count] of counts) {
+    if (count < most || (count === most && stepS > best)) continue;
+    best = stepS;
+    most = count;
+  }
+  if (!Number.isNaN(best)) return best;
+  const expected = `at least two intervals of ${name}, so that their length shows`;
+  throw new InputProblem([{ code: 'wrong-length', row: rowNumber[0] ?? 1, expected, found: `${beginS.length}` }]);
+}
+
+/** What register readings come to. */
+export interface RegisterSteps {
+  points: ChannelPoints;
+  /** steps in which the register fell: it was reset, exchanged, or ran over */
+  falls: number;
+  /** steps across missing readings, whose energy belongs to no one interval */
+  gaps: number;
+}
+
+/**
+ * Turns the readings of a register that counts up into the energy of each interval: the reading at its end less the one
+ * at its beginning. A step that falls, or spans more than one interval, gives no value.
+ * @param points readings in time order
+ * @param intervalS length of an interval [s]
+ */
+export function registerSteps(points: ChannelPoints, intervalS: number): RegisterSteps {
+  const n = Math.max(points.beginS.length - 1, 0);
+  const values = new Float64Array(n);
+  const scale = 10 ** decimalsOf(points.values);
+  let falls = 0;
+  let gaps = 0;
+  for (let i = 0; i < n; i++) {
+    const step = points.values[i + 1]! - points.values[i]!;
+    const spans = points.beginS[i + 1]! - points.beginS[i]! !== intervalS;
+    if (step < 0) falls++;
+    else if (spans) gaps++;
+    // readings are decimal numbers, so is what lies between them
+    values[i] = step < 0 || spans ? Number.NaN : Math.round(step * scale) / scale;
+  }
+  const beginS = points.beginS.subarray(0, n);
+  return { points: { ...points, beginS, values, rowNumber: points.rowNumber.subarray(1) }, falls, gaps };
+}
+
+const MOST_DECIMALS = 9;
+
+/** The least number of decimals that writes every reading. */
+function decimalsOf(values: Float64Array): number {
+  let decimals = 0;
+  for (const value of values) {
+    while (decimals < MOST_DECIMALS && !Number.isNaN(value) && !hasDecimals(value, decimals)) decimals++;
+  }
+  return decimals;
+}
+
+function hasDecimals(value: number, decimals: number): boolean {
+  const scale = 10 ** decimals;
+  return Math.round(value * scale) / scale === value;
+}

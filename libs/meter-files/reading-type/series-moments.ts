@@ -1,0 +1,100 @@
+import { InputProblem } from '#libs/engine/index.js';
+import { MeterChannel } from '../channels/meter-channel.js';
+import { mixedIntervals } from '../record/mixed-intervals.js';
+import type { ChosenSeries } from './choose-series.js';
+import { describeType } from './reading-type.js';
+import type { TimedReadings } from './timed-readings.js';
+
+/** What the stamps of a format mark, and what a person says of them. */
+export interface StampMarks {
+  /** beginnings with lengths behind them, or ends */
+  marks: 'begin' | 'end';
+  said: 'begin' | 'end' | undefined;
+}
+
+/**
+ * The length of a series' intervals: that of its readings, else that of its type, else the commonest step.
+ * @param readings of one series
+ * @param statedS by its type, NaN where that is silent [s]
+ * @returns NaN where nothing tells [s]
+ */
+export function intervalOf({ count, spanS, stampS }: TimedReadings, statedS: number): number {
+  for (let i = 0; i < count; i++) if (spanS[i]! > 0) return spanS[i]!;
+  return Number.isNaN(statedS) ? commonestStepS(stampS.subarray(0, count)) : statedS;
+}
+
+/** The shorter of two equally common ones. */
+function commonestStepS(stampS: Float64Array): number {
+  const sorted = stampS.slice().sort();
+  const counts = new Map<number, number>();
+  for (let i = 1; i < sorted.length; i++) {
+    const stepS = sorted[i]! - sorted[i - 1]!;
+    if (stepS > 0) counts.set(stepS, (counts.get(stepS) ?? 0) + 1);
+  }
+  let best = Number.NaN;
+  let most = 0;
+  for (const [stepS, count] of counts) {
+    if (count < most || (count === most && stepS > best)) continue;
+    best = stepS;
+    most = count;
+  }
+  return best;
+}
+
+/**
+ * Turns a series into a channel.
+ * @param chosen the series and what it is to the record
+ * @param stamps what they mark
+ * @param multiplier ratio of instrument transformers that is not in the values yet, 1 where there is none
+ * @throws InputProblem where intervals are of several lengths
+ */
+export function channelOf(chosen: ChosenSeries, stamps: StampMarks, multiplier: number): MeterChannel {
+  const { series, quantity, form, negative } = chosen;
+  const { readings, type, intervalS } = series;
+  const kilo = type.unit === 29 ? type.power : type.power - 3;
+  const channel = new MeterChannel({
+    name: describeType(type),
+    quantity,
+    energy: form !== 'power',
+    cumulative: form === 'register',
+    times: (negative ? -1 : 1) * (kilo > 0 ? 10 ** kilo : 1) * (quantity === 'voltage' ? 1 : multiplier),
+    over: kilo < 0 ? 10 ** -kilo : 1,
+  });
+  if (form !== 'register') {
+    refuseOtherLengths(readings, intervalS);
+    channel.intervalS = intervalS;
+  }
+  const { count, stampS, spanS, values, rowNumber } = readings;
+  for (let i = 0; i < count; i++) {
+    const shiftS =
+      form === 'register' ? registerShiftS(spanS[i]!, stamps) : intervalShiftS(spanS[i]!, intervalS, stamps);
+    channel.add(stampS[i]! + shiftS, values[i]!, rowNumber[i]!);
+  }
+  return channel;
+}
+
+/** From the stamp to the moment at which a register was read [s]. */
+function registerShiftS(spanS: number, { marks, said }: StampMarks): number {
+  return marks === 'begin' && said === 'end' && spanS > 0 ? spanS : 0;
+}
+
+/** From the stamp to the beginning of the interval [s]. */
+function intervalShiftS(spanS: number, intervalS: number, { marks, said }: StampMarks): number {
+  if (marks === 'begin') return 0;
+  if (spanS > 0) return -spanS;
+  return said === 'begin' ? 0 : -intervalS;
+}
+
+function refuseOtherLengths({ count, spanS, stampS, rowNumber }: TimedReadings, intervalS: number): void {
+  let stated = false;
+  for (let i = 0; i < count; i++) {
+    if (!(spanS[i]! > 0)) continue;
+    stated = true;
+    if (spanS[i] !== intervalS) throw new InputProblem([mixedIntervals(rowNumber[i]!, intervalS, spanS[i]!)]);
+  }
+  // a mean over a quarter of an hour, read once an hour, is no record of the hour
+  const stepS = stated ? intervalS : commonestStepS(stampS.subarray(0, count));
+  if (stepS !== intervalS && !Number.isNaN(stepS)) {
+    throw new InputProblem([mixedIntervals(rowNumber[0]!, intervalS, stepS)]);
+  }
+}

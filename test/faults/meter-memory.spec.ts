@@ -1,0 +1,81 @@
+// A meter file may be far larger than memory should be: a long preamble, rows of many columns of which two are
+// wanted. The whole program reads one of 1 GB with two million intervals within 200 MB (in the long run; a twentieth of
+// both otherwise), measured by the operating system as the most the process ever held.
+import { spawn } from 'node:child_process';
+import { createWriteStream, mkdtempSync, rmSync, statSync } from 'node:fs';
+import { tmpdir } from 'node:os';
+import { join } from 'node:path';
+import { Readable } from 'node:stream';
+import { pipeline } from 'node:stream/promises';
+import { fileURLToPath } from 'node:url';
+import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import { runs, SOAKED } from '../support/soak.js';
+
+const LIMIT_MB = 200;
+const INTERVALS = runs(100_000, 2_000_000);
+const PREAMBLE_ROWS = runs(50_000, 1_000_000);
+const ROWS_A_CHUNK = 1000;
+const COLUMNS_BESIDE = 70;
+
+const program = fileURLToPath(new URL('../../dist/apps/cli/main.js', import.meta.url));
+/** Says at the end how much memory the process held at most. */
+const SAYS = 'process.stderr.write("held " + (process.resourceUsage().maxRSS * 1024) / 1e6 + " MB")';
+const HOOK = `data:text/javascript,process.on("exit",()=>${SAYS})`;
+
+/** Free text, a header, then minutes with many columns nobody asks for. */
+function* largeFile(): Generator<string> {
+  for (let row = 0; row < PREAMBLE_ROWS; row += ROWS_A_CHUNK) {
+    yield Array.from({ length: ROWS_A_CHUNK }, (_, i) => `remark ${row + i} on the installation\n`).join('');
+  }
+  const beside = Array.from({ length: COLUMNS_BESIDE }, (_, k) => `channel ${k}`).join(',');
+  yield `time UTC,${beside},active power (kW),reactive power (kvar)\n`;
+  const cells = Array.from({ length: COLUMNS_BESIDE }, (_, k) => `${100 + k}.${k}`).join(',');
+  const firstMs = Date.UTC(2020, 0, 1);
+  for (let row = 0; row < INTERVALS; row += ROWS_A_CHUNK) {
+    const rows = Array.from({ length: ROWS_A_CHUNK }, (_, i) => {
+      const stamp = new Date(firstMs + (row + i) * 60_000).toISOString().slice(0, 19).replace('T', ' ');
+      return `${stamp},${cells},${(row + i) % 997}.125,${(row + i) % 331}.5\n`;
+    });
+    yield rows.join('');
+  }
+}
+
+async function runNode(args: string[]): Promise<{ stdout: string; heldMb: number }> {
+  const child = spawn(process.execPath, ['--import', HOOK, ...args]);
+  const [stdout, stderr] = await Promise.all([textOf(child.stdout), textOf(child.stderr)]);
+  const heldMb = Number(/held ([\d.]+) MB$/.exec(stderr)?.[1]);
+  if (Number.isNaN(heldMb)) throw new Error(`the program did not say what it held: ${stderr}`);
+  return { stdout, heldMb };
+}
+
+async function textOf(stream: Readable): Promise<string> {
+  let text = '';
+  for await (const chunk of stream) text += chunk;
+  return text;
+}
+
+describe('a file far larger than its record', () => {
+  let dir: string;
+  let file: string;
+
+  beforeAll(async () => {
+    dir = mkdtempSync(join(tmpdir(), 'varwright-large-'));
+    file = join(dir, 'large.csv');
+    await pipeline(Readable.from(largeFile()), createWriteStream(file));
+  });
+
+  afterAll(() => rmSync(dir, { recursive: true, force: true }));
+
+  it(`is read within ${LIMIT_MB} MB, whatever its size`, async () => {
+    expect(statSync(file).size).toBeGreaterThan(SOAKED ? 1e9 : 5e7);
+    const { stdout, heldMb } = await runNode([program, 'read', file, '--json']);
+    expect(JSON.parse(stdout).record.intervals).toBe(INTERVALS);
+    expect(heldMb).toBeLessThan(LIMIT_MB);
+  });
+
+  it('would be found out if it were held, which shows that the test above can fail', async () => {
+    const holding = `globalThis.held = Buffer.alloc(${LIMIT_MB}e6, 1)`;
+    const { heldMb } = await runNode(['-e', holding]);
+    expect(heldMb).toBeGreaterThan(LIMIT_MB);
+  });
+});
