@@ -25,13 +25,20 @@ describe('the arguments of a command', () => {
         ['load', 'load.csv'],
         ['pdf', 'out.pdf'],
       ]),
+      lists: new Map(),
       flags: new Set(['json']),
     });
+  });
+
+  it('may hold further meter files, in the order they were typed', () => {
+    const args = ['site.json', '--extend', 'b.csv', '--load', 'a.csv', '--extend=c.csv'];
+    expect(readCommandLine('plan', plan, args).lists.get('extend')).toEqual(['b.csv', 'c.csv']);
   });
 
   it('may be "-" for standard input, once', () => {
     expect(problemsOf(['-', '--load', 'load.csv'])).toEqual([]);
     expect(problemsOf(['site.json', '--load', '-'])).toEqual([]);
+    expect(problemsOf(['site.json', '--load', '-', '--extend', '-'])).toHaveLength(1);
     expect(problemsOf(['-', '--load', '-'])).toEqual([
       { code: 'usage', expected: '"-" for one file only', found: 'it 2 times' },
     ]);
@@ -41,6 +48,7 @@ describe('the arguments of a command', () => {
     ['no operand', [], 'one SITE', 'none'],
     ['two operands', ['a', 'b'], 'one SITE', 'a b'],
     ['an option without its value', ['a', '--load'], '--load METER-FILE', 'no value'],
+    ['a further file without its name', ['a', '--extend'], '--extend METER-FILE', 'no value'],
     ['an option with an empty value', ['a', '--load='], '--load METER-FILE', 'no value'],
     ['a flag with a value', ['a', '--json=yes'], '--json without a value', '"yes"'],
     ['an option twice', ['a', '--load', 'b', '--load', 'c'], '--load once', 'it twice'],
@@ -48,14 +56,14 @@ describe('the arguments of a command', () => {
     [
       'an unknown option',
       ['a', '--lod', '--json'],
-      'one of --load, --pdf, --format, --map, --time-zone, --json',
+      'one of --load, --pdf, --format, --map, --time-zone, --extend, --json',
       '--lod',
     ],
-    ['a short option', ['a', '-j'], 'one of --load, --pdf, --format, --map, --time-zone, --json', '-j'],
+    ['a short option', ['a', '-j'], 'one of --load, --pdf, --format, --map, --time-zone, --extend, --json', '-j'],
     [
       'a name of the language',
       ['a', '--constructor'],
-      'one of --load, --pdf, --format, --map, --time-zone, --json',
+      'one of --load, --pdf, --format, --map, --time-zone, --extend, --json',
       '--constructor',
     ],
   ])('with %s are refused, naming it', (_what, args, expected, found) => {
@@ -69,9 +77,10 @@ describe('the arguments of a command', () => {
 
 describe('the help', () => {
   it('names every command, and every option of each', () => {
-    for (const [name, { values, flags }] of Object.entries(COMMANDS)) {
+    for (const [name, { values, lists, flags }] of Object.entries(COMMANDS)) {
       expect(overview()).toContain(name);
-      for (const option of [...Object.keys(values), ...flags]) expect(helpOf(name)).toContain(`--${option} `);
+      for (const option of [...Object.keys(values), ...Object.keys(lists), ...flags])
+        expect(helpOf(name)).toContain(`--${option} `);
     }
   });
 });

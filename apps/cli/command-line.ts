@@ -15,39 +15,39 @@ export const STDIN = '-';
  */
 export function readCommandLine(name: string, command: Command, args: string[]): CommandLine {
   const options = {
-    ...Object.fromEntries(Object.keys(command.values).map((key) => [key, { type: 'string' as const }])),
+    ...Object.fromEntries(valueNames(command).map((key) => [key, { type: 'string' as const }])),
     ...Object.fromEntries(command.flags.map((key) => [key, { type: 'boolean' as const }])),
   };
   const { tokens } = parseArgs({ args, options, strict: false, allowPositionals: true, tokens: true });
-  const values = new Map<string, string>();
-  const flags = new Set<string>();
+  const line: CommandLine = { command: name, operand: '', values: new Map(), lists: new Map(), flags: new Set() };
   const operands: string[] = [];
   const problems: Problem[] = [];
   for (const token of tokens) {
     if (token.kind === 'positional') operands.push(token.value);
-    if (token.kind === 'option') problems.push(...takeOption(token, command, values, flags));
+    if (token.kind === 'option') problems.push(...takeOption(token, command, line));
   }
-  problems.push(...operandProblems(command, operands), ...stdinProblems(operands, values));
+  problems.push(...operandProblems(command, operands), ...stdinProblems(operands, line));
   if (problems.length > 0) throw new InputProblem(problems);
-  return { command: name, operand: operands[0]!, values, flags };
+  return { ...line, operand: operands[0]! };
 }
 
 function takeOption(
   token: { name: string; rawName: string; value: string | undefined },
   command: Command,
-  values: Map<string, string>,
-  flags: Set<string>,
+  { values, lists, flags }: CommandLine,
 ): Problem[] {
   const { name, rawName, value } = token;
   if (values.has(name) || flags.has(name)) return [usage(`${rawName} once`, 'it twice')];
-  const word = Object.hasOwn(command.values, name) ? command.values[name] : undefined;
-  if (word !== undefined) {
+  const isList = Object.hasOwn(command.lists, name);
+  if (isList || Object.hasOwn(command.values, name)) {
+    const word = isList ? command.lists[name] : command.values[name];
     if (value === undefined || value === '') return [usage(`${rawName} ${word}`, 'no value')];
-    values.set(name, value);
+    if (isList) lists.set(name, [...(lists.get(name) ?? []), value]);
+    else values.set(name, value);
     return [];
   }
   if (!command.flags.includes(name)) {
-    const known = [...Object.keys(command.values), ...command.flags].map((key) => `--${key}`);
+    const known = [...valueNames(command), ...command.flags].map((key) => `--${key}`);
     return [usage(`one of ${known.join(', ')}`, rawName)];
   }
   if (value !== undefined) return [usage(`${rawName} without a value`, JSON.stringify(value))];
@@ -55,13 +55,18 @@ function takeOption(
   return [];
 }
 
+function valueNames({ values, lists }: Command): string[] {
+  return [...Object.keys(values), ...Object.keys(lists)];
+}
+
 function operandProblems({ operand }: Command, operands: string[]): Problem[] {
   if (operands.length === 1) return [];
   return [usage(`one ${operand}`, operands.length === 0 ? 'none' : operands.join(' '))];
 }
 
-function stdinProblems(operands: string[], values: Map<string, string>): Problem[] {
-  const files = [...operands, values.get('load'), values.get('map')].filter((file) => file === STDIN);
+function stdinProblems(operands: string[], { values, lists }: CommandLine): Problem[] {
+  const named = [...operands, values.get('load'), values.get('map'), ...(lists.get('extend') ?? [])];
+  const files = named.filter((file) => file === STDIN);
   const toStdin = ['pdf', 'netlist']
     .filter((name) => values.get(name) === STDIN)
     .map((name) => usage(`--${name} with the name of a file`, '"-"'));

@@ -3,6 +3,8 @@ export interface CommandLine {
   command: string;
   operand: string;
   values: Map<string, string>;
+  /** values of options that may stand several times, in the order they were typed */
+  lists: Map<string, string[]>;
   flags: Set<string>;
 }
 
@@ -12,6 +14,8 @@ export interface Command {
   operand: string;
   /** options that take a value, with a word for it */
   values: Record<string, string>;
+  /** options that take a value and may stand several times */
+  lists: Record<string, string>;
   /** options that don't */
   flags: readonly string[];
   /** one line */

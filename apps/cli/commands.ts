@@ -2,7 +2,12 @@ import type { Command } from './command.js';
 
 const METER_OPTIONS = { format: 'FORMAT', map: 'FILE', 'time-zone': 'ZONE' };
 
-const METER_DETAILS = `  --format FORMAT    format of the meter file, where it is not recognised by itself
+const METER_LISTS = { extend: 'METER-FILE' };
+
+const METER_DETAILS = `  --extend FILE      a further meter file that extends or corrects the record, read by the same options; may stand
+                     several times, and each is laid over what stands before it; "overlap" in the map says which
+                     counts where one disagrees: "earlier" or "later"
+  --format FORMAT    format of the meter file, where it is not recognised by itself
   --map FILE         JSON: columns, separator, decimal mark, what stamps mark, repairs; also an answer to a question
   --time-zone ZONE   zone of local stamps: "Europe/Dublin", "UTC", "+10:00"
 `;
@@ -16,6 +21,7 @@ export const COMMANDS: Record<string, Command> = {
   read: {
     operand: 'METER-FILE',
     values: METER_OPTIONS,
+    lists: METER_LISTS,
     flags: ['json', 'intervals', 'csv'],
     does: 'read a meter file and say what it holds',
     details: `${METER_DETAILS}  --intervals        with every valid interval (JSON)
@@ -26,6 +32,7 @@ export const COMMANDS: Record<string, Command> = {
   plan: {
     operand: 'SITE',
     values: { load: 'METER-FILE', pdf: 'OUT', ...METER_OPTIONS },
+    lists: METER_LISTS,
     flags: ['json'],
     does: 'design a bank for a site and judge it',
     details: PLAN_DETAILS,
@@ -34,6 +41,7 @@ export const COMMANDS: Record<string, Command> = {
   assess: {
     operand: 'SITE',
     values: { load: 'METER-FILE', pdf: 'OUT', ...METER_OPTIONS },
+    lists: METER_LISTS,
     flags: ['json'],
     does: "judge the site's own bank against the record",
     details: PLAN_DETAILS,
@@ -42,6 +50,7 @@ export const COMMANDS: Record<string, Command> = {
   scan: {
     operand: 'SITE',
     values: { level: 'KVAR', orders: 'A:B:STEP', corner: 'K', netlist: 'OUT' },
+    lists: {},
     flags: ['json'],
     does: 'network impedance over harmonic order',
     details: `  --level KVAR       the level that is connected; all stages where not given

@@ -2,34 +2,53 @@ import { readMeterMap } from '#libs/contract/meter-map-schema.js';
 import { isTimeZone } from '#libs/contract/time-zone.js';
 import { InputProblem } from '#libs/engine/index.js';
 import { FORMATS } from '#libs/meter-files/formats.js';
-import type { MeterReading } from '#libs/meter-files/meter-format.js';
+import type { MeterReading, ReadOptions } from '#libs/meter-files/meter-format.js';
 import { readMeterFile } from '#libs/meter-files/read-meter-file.js';
+import { extendRecord } from '#libs/meter-files/record/extend-record.js';
 import type { CommandLine } from './command.js';
 import { usage } from './command-line.js';
 import { openInput, readJson } from './input-file.js';
+import { say } from './output.js';
+import { withProgress } from './reading-progress.js';
 import { inFile } from './refused-file.js';
 
 /**
- * Reads the meter file a command names, as its options say.
+ * Reads the meter file a command names, as its options say, and every file that extends it.
  * @param line what was typed
  * @param path the meter file
  * @param siteTimeZone the site's zone, where there is a site
- * @returns the record and how good its file was
+ * @returns the record and how good its files were
  */
 export async function readMeterRecord(line: CommandLine, path: string, siteTimeZone?: string): Promise<MeterReading> {
   checkOptions(line);
   const mapPath = line.values.get('map');
   const map =
     mapPath === undefined ? undefined : await inFile(mapPath, async () => readMeterMap(await readJson(mapPath)));
+  const timeZone = line.values.get('time-zone');
+  const options: ReadOptions = {
+    ...present('format', line.values.get('format')),
+    ...present('timeZone', timeZone),
+    ...present('map', map),
+    ...present('siteTimeZone', siteTimeZone),
+  };
+  let reading = await readOne(path, options);
+  for (const further of line.lists.get('extend') ?? []) {
+    const later = await readOne(further, options);
+    const zone = siteTimeZone ?? timeZone ?? map?.timeZone ?? 'UTC';
+    const extended = await inFile(further, async () =>
+      extendRecord(reading, later, { ...present('map', map), timeZone: zone }),
+    );
+    if (extended === reading) say(`${further} adds nothing to the record`);
+    reading = extended;
+  }
+  return reading;
+}
+
+function readOne(path: string, options: ReadOptions): Promise<MeterReading> {
   return inFile(path, async () => {
-    const { bytes, sizeBytes } = await openInput(path);
-    return readMeterFile(bytes, {
-      ...present('format', line.values.get('format')),
-      ...present('timeZone', line.values.get('time-zone')),
-      ...present('map', map),
-      ...present('siteTimeZone', siteTimeZone),
-      ...present('sizeBytes', sizeBytes),
-    });
+    const file = await openInput(path);
+    const bytes = withProgress(file, (progress) => say(`${path}: ${progress}`));
+    return readMeterFile(bytes, { ...options, ...present('sizeBytes', file.sizeBytes) });
   });
 }
 

@@ -64,12 +64,18 @@ export const ANSWER_SCHEMAS: Record<string, object> = {
       ...{ type: text, title: text, status: whole, detail: text, code: text, path: text, row: whole, column: whole },
       problems: listOf(problem),
       questions: listOf(open),
+      offered: listOf(objectOf({ id: text, name: text })),
     },
   },
   StoredSite: objectOf({ ...siteHead, site: schemaOf('Site') }),
   LoadRecord: objectOf({
     ...{ id: text, siteId: text, hash: text, createdAt: moment, record: open, quality: open },
-    file: objectOf({ name: nullable(text), sha256: text, bytes: whole }),
+    ...{ revision: whole, previousId: nullable(text) },
+    file: objectOf({ name: nullable(text), sha256: text, bytes: whole, header: nullable(text) }),
+  }),
+  KeptAnswers: objectOf({
+    ...{ id: text, name: text, map: open, header: nullable(text), version: whole },
+    ...{ createdAt: moment, updatedAt: moment },
   }),
   Job: objectOf({
     ...{ id: whole, siteId: text, kind: text, attempt: whole, createdAt: moment, finishedAt: nullable(moment) },
@@ -77,6 +83,9 @@ export const ANSWER_SCHEMAS: Record<string, object> = {
     progress: { type: 'number', minimum: 0, maximum: 1 },
     error: { nullable: true, allOf: [schemaOf('Problem')] },
     revision: nullable(whole),
+    recordId: nullable(text),
+    remainingS: nullable({ type: 'number' }),
+    bytesPerS: nullable({ type: 'number' }),
     links: open,
   }),
   RevisionHead: objectOf(revisionHead),
@@ -99,6 +108,12 @@ const upload: Part = {
     query('format', 'format of the file, where it is not to be recognised', text),
     query('timeZone', 'zone of stamps that say none: a name or a fixed offset', text),
     query('map', 'a map as JSON, in answer to a question', text),
+    query('keptMap', 'name of kept answers to read the file with; what "map" says wins', text),
+    query('wait', 'seconds to wait before a job is answered instead; absent, until the file is read', {
+      type: 'integer',
+      minimum: 0,
+      maximum: 60,
+    }),
     query('name', 'name of the file', text),
   ],
   requestBody: {
@@ -108,14 +123,27 @@ const upload: Part = {
         schema: {
           type: 'object',
           required: ['file'],
-          properties: { file: { type: 'string', format: 'binary' }, format: text, timeZone: text, map: text },
+          properties: {
+            file: { type: 'string', format: 'binary' },
+            ...{ format: text, timeZone: text, map: text, keptMap: text, wait: text },
+          },
         },
       },
       'text/csv': { schema: text },
       'application/octet-stream': { schema: { type: 'string', format: 'binary' } },
     },
   },
-  responses: { 201: json('What was read.', schemaOf('LoadRecord')) },
+  responses: {
+    201: json('What was read.', schemaOf('LoadRecord')),
+    202: json('The job that reads the file, where it takes longer than "wait".', schemaOf('Job')),
+  },
+};
+const extension: Part = {
+  ...upload,
+  responses: {
+    ...upload.responses,
+    200: json('The record as it stands: the file adds nothing.', schemaOf('LoadRecord')),
+  },
 };
 
 const sites = '/api/sites';
@@ -123,6 +151,8 @@ const site = `${sites}/{siteId}`;
 const record = `${site}/records/{recordId}`;
 const revision = `${site}/revisions/{revision}`;
 const job = '/api/jobs/{jobId}';
+const keptMaps = '/api/kept-maps';
+const keptMap = `${keptMaps}/{keptMapId}`;
 
 export const OPEN_API_PARTS: Record<string, Part> = {
   [`get ${sites}`]: {
@@ -142,6 +172,20 @@ export const OPEN_API_PARTS: Record<string, Part> = {
   },
   [`post ${site}/records`]: upload,
   [`get ${record}`]: { responses: { 200: json('The record.', schemaOf('LoadRecord')) } },
+  [`get ${record}/revisions`]: {
+    responses: { 200: json('The revisions.', objectOf({ records: listOf(schemaOf('LoadRecord')) })) },
+  },
+  [`post ${record}/revisions`]: extension,
+  [`get ${keptMaps}`]: {
+    responses: { 200: json('The kept answers.', objectOf({ keptMaps: listOf(schemaOf('KeptAnswers')) })) },
+  },
+  [`post ${keptMaps}`]: { responses: { 201: json('The kept answers.', schemaOf('KeptAnswers')) } },
+  [`get ${keptMap}`]: { responses: { 200: json('The kept answers.', schemaOf('KeptAnswers')) } },
+  [`put ${keptMap}`]: {
+    parameters: [header('If-Match', 'the ETag the answers were read with', true)],
+    responses: { 200: json('The answers as they stand now.', schemaOf('KeptAnswers')) },
+  },
+  [`delete ${keptMap}`]: { parameters: [header('If-Match', 'the ETag the answers were read with', false)] },
   [`get ${record}/columns`]: { responses: { 200: json('One list a column.', open) } },
   [`post ${site}/plans`]: planning,
   [`post ${site}/assessments`]: planning,

@@ -3,6 +3,7 @@ import { type ArgumentsHost, Catch, type ExceptionFilter, HttpException } from '
 import type { FastifyReply } from 'fastify';
 import { type ProblemJson, problemJson } from '#libs/contract/error-body.js';
 import { InputProblem, type ProblemCode } from '#libs/engine/index.js';
+import { QuestionWithOffer } from './records/question-with-offer.js';
 import { RefusedRequest } from './refused-request.js';
 import type { ServerLog } from './server-log.js';
 
@@ -32,6 +33,7 @@ export class ProblemFilter implements ExceptionFilter {
 export function describeError(error: unknown): ProblemJson {
   if (error instanceof StoredProblem) return error.problem;
   if (error instanceof RefusedRequest) return { ...problemJson(error), status: error.status, title: error.title };
+  if (error instanceof QuestionWithOffer) return { ...problemJson(error), offered: error.offered };
   if (error instanceof InputProblem) return problemJson(error);
   const status = statusOf(error);
   if (status !== null && status < 500) return refusal(status, (error as Error).message);

@@ -1,7 +1,7 @@
 import type { FastifyInstance } from 'fastify';
 import { RefusedRequest } from './refused-request.js';
 
-const UPLOADS = /\/records$/;
+const UPLOADS = /\/records(\/:recordId\/revisions)?$/;
 const FILE_TYPES = ['text/csv', 'application/octet-stream'];
 
 /**

@@ -14,6 +14,7 @@ import { loadDemo } from './demo/load-demo.js';
 import { HealthController } from './health/health-controller.js';
 import { HomeController } from './home/home-controller.js';
 import { JobsController } from './jobs/jobs-controller.js';
+import { KeptMapsController } from './kept-maps/kept-maps-controller.js';
 import { refuseForeign } from './local-requests.js';
 import { OpenApi } from './open-api.js';
 import { OpenApiController } from './open-api-controller.js';
@@ -23,9 +24,11 @@ import { planRunner } from './planning/plan-runner.js';
 import { Planning } from './planning/planning.js';
 import { PlanningController } from './planning/planning-controller.js';
 import { describeError, ProblemFilter } from './problem-filter.js';
+import { IMPORT, importRunner, wantedPlaces } from './records/import-jobs.js';
 import { RecordImport } from './records/record-import.js';
 import { RecordsController } from './records/records-controller.js';
 import { Spool } from './records/spool.js';
+import { UploadIntake } from './records/upload-intake.js';
 import { refuseOtherBodies } from './request-bodies.js';
 import { ServerLog } from './server-log.js';
 import type { Settings } from './settings.js';
@@ -49,6 +52,7 @@ const CONTROLLERS: ServerParts['controllers'] = [
   SitesController,
   RecordsController,
   PlanningController,
+  KeptMapsController,
   JobsController,
   DemoController,
   OpenApiController,
@@ -75,12 +79,15 @@ export async function createServer(
   const log = new ServerLog(settings.logLevel);
   const store = await openStore(settings.dbUrl);
   const spool = new Spool(settings.spoolDir, settings.uploadBytes);
-  await spool.prepare();
+  await spool.prepare(await wantedPlaces(store));
   const pool = new WorkerPool(workerFile, (error) => log.fault(error));
   const runner = planRunner(store, pool);
+  const importer = new RecordImport(store, pool);
   const jobs = new InProcessJobs({
     store,
-    runners: { plan: runner, assess: runner },
+    runners: { plan: runner, assess: runner, [IMPORT]: importRunner({ store, spool, importer }) },
+    // A file is read while a plan is made.
+    atOnce: 2,
     describe: describeError,
     onFault: (error) => log.fault(error),
   });
@@ -95,7 +102,8 @@ export async function createServer(
       { provide: JOBS, useValue: jobs },
       { provide: OpenApi, useValue: new OpenApi() },
       { provide: PageFiles, useValue: new PageFiles(pageFolder) },
-      RecordImport,
+      { provide: RecordImport, useValue: importer },
+      UploadIntake,
       Planning,
       {
         provide: 'closing',
@@ -112,9 +120,7 @@ export async function createServer(
   };
   const app = await serve(module, { settings, log });
   if (settings.demo) {
-    demo = loadDemo({ store, spool, importer: app.get(RecordImport), planning: app.get(Planning) }).catch((error) =>
-      log.fault(error),
-    );
+    demo = loadDemo({ store, spool, importer, planning: app.get(Planning) }).catch((error) => log.fault(error));
   }
   return app;
 }

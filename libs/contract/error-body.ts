@@ -26,6 +26,8 @@ export interface ProblemJson {
   column?: number;
   problems: readonly Problem[];
   questions?: readonly QuestionAsked[];
+  /** answers kept for files with the same header, which may settle the questions */
+  offered?: readonly { id: string; name: string }[];
 }
 
 /** HTTP status of an input problem, by the code of its first problem; a fault of ours is 500. */

@@ -32,6 +32,7 @@ export const meterMapSchema = z
     quality: z.record(label(40), z.enum(['measured', 'estimated', 'missing'])).optional(),
     dayColumns: z.enum(['clock', 'elapsed']).optional(),
     keepRow: z.enum(['first', 'last']).optional(),
+    overlap: z.enum(['earlier', 'later']).optional(),
   })
   .meta({ id: 'MeterMap' });
 

@@ -125,4 +125,6 @@ export interface MeterMap {
   dayColumns?: 'clock' | 'elapsed';
   /** which of several rows with one stamp and different values counts */
   keepRow?: 'first' | 'last';
+  /** which counts where a file that extends a record disagrees with it: the record as it stands, or the file */
+  overlap?: 'earlier' | 'later';
 }

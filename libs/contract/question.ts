@@ -1,4 +1,4 @@
-import { InputProblem } from '#libs/engine/index.js';
+import { InputProblem, type RecordOverlap } from '#libs/engine/index.js';
 import type { MeterMap } from './meter-map.js';
 
 /** One way of reading what is in doubt, and what would come of it. */
@@ -18,6 +18,8 @@ export interface QuestionAsked {
   /** one sentence: what is in doubt */
   about: string;
   readings: QuestionReading[];
+  /** where a record and the file that extends it differ, and by how much */
+  overlap?: RecordOverlap;
 }
 
 /** Thrown where the data can be read in more than one way and guessing would change the result. */

@@ -101,6 +101,7 @@ export * from './quantity/minimum.js';
 export * from './quantity/percentile.js';
 export * from './quantity/power-factor.js';
 export * from './record/load-record.js';
+export * from './record/merge-records.js';
 export * from './record/record-summary.js';
 export * from './record/zone-table.js';
 export * from './requirement/bus-load.js';

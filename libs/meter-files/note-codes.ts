@@ -76,4 +76,13 @@ export const NOTE_CODES = {
   'nem12-quality-unstated': ['values'],
 } as const satisfies Record<string, readonly string[]>;
 
-export type NoteCode = keyof typeof NOTE_CODES;
+/** Notes that no file raises by itself: what came of extending a record, and which kept answers a file was read with. */
+export const RECORD_NOTE_CODES = {
+  'record-extended': ['added', 'agreed'],
+  'overlap-settled': ['intervals', 'kept'],
+  'column-left-out': ['column'],
+  'kept-answers-used': ['name', 'version'],
+} as const satisfies Record<string, readonly string[]>;
+
+export type NoteTable = typeof NOTE_CODES & typeof RECORD_NOTE_CODES;
+export type NoteCode = keyof NoteTable;

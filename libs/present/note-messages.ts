@@ -180,6 +180,18 @@ export const NOTE_MESSAGES: Messages = {
     '{entries:entry has|entries have} no links and were joined by their order.',
     'See that each channel is what it says.',
   ),
+  'record-extended': told(
+    'The record was extended by {added:interval|intervals} of a further file; {agreed:interval was|intervals were} in both, alike.',
+  ),
+  'overlap-settled': noted(
+    'The record and the further file disagree in {intervals:interval|intervals}; the {kept} of the two was kept, as asked.',
+    'Ask which of them the bill used.',
+  ),
+  'column-left-out': noted(
+    'The column {column} was left out: only a part of the extended record has it.',
+    'Extend with a file that has it.',
+  ),
+  'kept-answers-used': told('The file was read with the answers kept as “{name}”, version {version}.'),
   'nem12-time': told('NEM12 keeps its own time, UTC{zone}, all year.'),
   'nem12-header-missing': noted('The NEM12 header record is missing.', 'The file may have been cut.'),
   'nem12-end-missing': noted('The NEM12 end record is missing.', 'The file may have been cut.'),

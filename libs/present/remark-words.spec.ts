@@ -3,7 +3,7 @@ import { join } from 'node:path';
 import { fileURLToPath } from 'node:url';
 import { describe, expect, it } from 'vitest';
 import { remark } from '#libs/engine/index.js';
-import { NOTE_CODES } from '#libs/meter-files/note-codes.js';
+import { NOTE_CODES, RECORD_NOTE_CODES } from '#libs/meter-files/note-codes.js';
 import { MESSAGES } from './message-catalogue.js';
 import { neededNames, remarkConsequence, remarkSentence, remarkSubject } from './remark-words.js';
 
@@ -50,6 +50,8 @@ function defaultCodes(): string[] {
   ];
 }
 
+const ALL_NOTES = { ...NOTE_CODES, ...RECORD_NOTE_CODES };
+
 describe('the catalogue of messages', () => {
   const literal = literalRemarks();
 
@@ -73,11 +75,11 @@ describe('the catalogue of messages', () => {
   });
 
   it('has a sentence for every note of a reader', () => {
-    expect(Object.keys(NOTE_CODES).filter((code) => MESSAGES[code] === undefined)).toEqual([]);
+    expect(Object.keys(ALL_NOTES).filter((code) => MESSAGES[code] === undefined)).toEqual([]);
   });
 
   it('asks a reader’s note for no value that does not come with it', () => {
-    for (const [code, given] of Object.entries(NOTE_CODES)) {
+    for (const [code, given] of Object.entries(ALL_NOTES)) {
       const { text, consequence } = MESSAGES[code]!;
       const missing = [...neededNames(text), ...neededNames(consequence)].filter(
         (name) => !(given as readonly string[]).includes(name),

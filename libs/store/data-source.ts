@@ -8,6 +8,7 @@ import {
 import { migrations } from '#migrations/migrations.js';
 import { type Dialect, speakDialect } from './columns.js';
 import { Job } from './job.js';
+import { KeptMap } from './kept-map.js';
 import { Milestone } from './milestone.js';
 import { ProposalFile } from './proposal-file.js';
 import { RecordColumn } from './record-column.js';
@@ -15,7 +16,7 @@ import { Revision } from './revision.js';
 import { StoredRecord } from './stored-record.js';
 import { StoredSite } from './stored-site.js';
 
-const ENTITIES = [StoredSite, StoredRecord, RecordColumn, Revision, ProposalFile, Job, Milestone];
+const ENTITIES = [StoredSite, StoredRecord, RecordColumn, Revision, ProposalFile, Job, Milestone, KeptMap];
 const BUSY_MS = 5000;
 
 /** Where the data is kept. */

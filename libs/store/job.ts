@@ -59,6 +59,14 @@ export class Job {
   @Column({ type: 'integer', nullable: true })
   revision: number | null;
 
+  /** load record it led to */
+  @Column({ type: 'varchar', length: 36, nullable: true })
+  recordId: string | null;
+
+  /** when its worker began, UTC epoch seconds; null before [s] */
+  @Col('double', { nullable: true })
+  startedS: number | null;
+
   @Col('instant')
   createdAt: Date;
 

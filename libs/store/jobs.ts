@@ -30,10 +30,20 @@ export async function insertJob(manager: EntityManager, request: JobRequest, now
     progress: 0,
     error: null,
     revision: null,
+    recordId: null,
+    startedS: null,
     createdAt: now,
     finishedAt: null,
   });
   return manager.save(Job, job);
+}
+
+/**
+ * The jobs of a kind whose work is still to come, oldest first.
+ * @param kind of job
+ */
+export function unfinishedJobs(manager: EntityManager, kind: string): Promise<Job[]> {
+  return manager.find(Job, { where: { kind, state: In(UNFINISHED) }, order: { id: 'ASC' } });
 }
 
 /**
@@ -55,7 +65,7 @@ export function claimJob(store: Store, nowS: number, leaseS: number): Promise<Jo
     if (store.skipsLocked) search.setLock('pessimistic_write').setOnLocked('skip_locked');
     const job = await search.getOne();
     if (job === null) return null;
-    const taken = { attempt: job.attempt + 1, step: job.step + 1, heartbeatS: nowS };
+    const taken = { attempt: job.attempt + 1, step: job.step + 1, heartbeatS: nowS, startedS: nowS };
     await manager.update(Job, { id: job.id }, { ...taken, state: 'running', progress: 0 });
     return { ...job, ...taken, state: 'running', progress: 0 };
   });
@@ -80,7 +90,7 @@ export async function beat(
 export async function finishJob(
   manager: EntityManager,
   claim: Claim,
-  end: Pick<Job, 'state' | 'error' | 'revision' | 'finishedAt'>,
+  end: Pick<Job, 'state' | 'error' | 'finishedAt'> & Partial<Pick<Job, 'revision' | 'recordId'>>,
 ): Promise<boolean> {
   const progress = end.state === 'done' ? { progress: 1 } : {};
   return change(manager, claim, { ...end, ...progress });
@@ -91,7 +101,9 @@ export async function releaseJob(manager: EntityManager, claim: Claim): Promise<
   return change(manager, claim, { state: 'queued' });
 }
 
-type Change = Partial<Pick<Job, 'state' | 'heartbeatS' | 'progress' | 'error' | 'revision' | 'finishedAt'>>;
+type Change = Partial<
+  Pick<Job, 'state' | 'heartbeatS' | 'progress' | 'error' | 'revision' | 'recordId' | 'finishedAt'>
+>;
 
 async function change(manager: EntityManager, { id, attempt }: Claim, values: Change): Promise<boolean> {
   const held = { id, attempt, state: 'running' as const };

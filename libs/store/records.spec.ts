@@ -22,6 +22,7 @@ const FACTS: RecordFacts = {
   fileName: 'year.csv',
   fileHash: 'b'.repeat(64),
   fileBytes: 12,
+  fileHeader: null,
   createdAt: NOW,
 };
 

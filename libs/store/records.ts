@@ -1,15 +1,17 @@
 import type { EntityManager } from 'typeorm';
-import { createLoadRecord, type LoadRecord } from '#libs/engine/index.js';
+import { createLoadRecord, InputProblem, type LoadRecord } from '#libs/engine/index.js';
 import { columnName, type MonthColumn, packRecord, type RequiredColumn } from './pack-record.js';
 import { unpackColumnInto } from './packed-column.js';
 import { RecordColumn } from './record-column.js';
+import type { Store } from './store.js';
 import { StoredRecord } from './stored-record.js';
 
 /** What is kept beside a record's own columns. */
 export type RecordFacts = Pick<
   StoredRecord,
-  'id' | 'siteId' | 'hash' | 'summary' | 'quality' | 'fileName' | 'fileHash' | 'fileBytes' | 'createdAt'
->;
+  'id' | 'siteId' | 'hash' | 'summary' | 'quality' | 'fileName' | 'fileHash' | 'fileBytes' | 'fileHeader' | 'createdAt'
+> &
+  Partial<Pick<StoredRecord, 'revision' | 'previousId'>>;
 
 /** A year of seven columns goes in one; either database takes more than thirty times the parameters this makes. */
 const ROWS_A_STATEMENT = 100;
@@ -44,6 +46,28 @@ export async function insertRecord(
       rows.map((column) => ({ recordId: facts.id, ...column, bytes: Buffer.from(column.bytes) })),
     );
   }
+}
+
+/**
+ * Makes sure that a record is the latest revision and stays so until the write ends; call it before inserting the next.
+ * @param store the store
+ * @param manager the write's manager
+ * @param previous the revision that is to be extended
+ * @throws InputProblem `not-found` where it was removed, `stale` where somebody else has extended it
+ */
+export async function holdLatest(
+  store: Pick<Store, 'skipsLocked'>,
+  manager: EntityManager,
+  previous: Pick<StoredRecord, 'id' | 'revision'>,
+): Promise<void> {
+  const { id, revision } = previous;
+  const search = manager.createQueryBuilder(StoredRecord, 'record').where('record.id = :id', { id });
+  if (store.skipsLocked) search.setLock('pessimistic_write');
+  const expected = 'a load record that is there';
+  if ((await search.getOne()) === null) throw new InputProblem([{ code: 'not-found', expected, found: id }]);
+  if (!(await manager.existsBy(StoredRecord, { previousId: id }))) return;
+  const found = `revision ${revision}, which was extended already`;
+  throw new InputProblem([{ code: 'stale', expected: 'the latest revision of the record', found }]);
 }
 
 /**

@@ -14,6 +14,16 @@ export class StoredRecord {
   @Column({ type: 'varchar', length: 36 })
   siteId: string;
 
+  /** counts the revisions of one record from 1: each further file that extends or corrects it makes the next */
+  @Column({ type: 'integer', default: 1 })
+  revision: number;
+
+  /** the revision this one extends, null for the first; at most one extends each */
+  @Index('load_record_previous', { unique: true })
+  @ForeignKey(() => StoredRecord, { name: 'load_record_previous_fk' })
+  @Column({ type: 'varchar', length: 36, nullable: true })
+  previousId: string | null;
+
   /** SHA-256 of the record's bytes, 64 hexadecimal digits */
   @Column({ type: 'varchar', length: 64 })
   hash: string;
@@ -59,6 +69,10 @@ export class StoredRecord {
 
   @Column({ type: 'integer' })
   fileBytes: number;
+
+  /** SHA-256 of the file's header row, by which kept answers are offered again; null where it has none or it is not known */
+  @Column({ type: 'varchar', length: 64, nullable: true })
+  fileHeader: string | null;
 
   @Col('instant')
   createdAt: Date;

@@ -37,7 +37,8 @@ for (const { name, available, create } of databases) {
       expect(status).toBe(201);
       expect(headers.get('location')).toBe(`/api/sites/${siteId}/records/${body.id}`);
       const sha256 = createHash('sha256').update(content).digest('hex');
-      expect(body.file).toEqual({ name: 'spring.csv', sha256, bytes: content.length });
+      const header = expect.stringMatching(/^[0-9a-f]{64}$/);
+      expect(body.file).toEqual({ name: 'spring.csv', sha256, bytes: content.length, header });
       const direct = await readMeterFile(bytesOf(content), { siteTimeZone: 'Europe/Dublin' });
       const store = await openStore(database.url);
       const stored = await store.read((manager) => readRecord(manager, body.id));

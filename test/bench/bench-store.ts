@@ -99,7 +99,7 @@ async function tookNs(work: () => Promise<unknown>): Promise<number> {
 
 function insert(store: Store, id: string): Promise<void> {
   const facts = { id, siteId: 's', hash: '', summary: {} as RecordSummary, quality: {}, createdAt: new Date(0) };
-  const file = { fileName: null, fileHash: '', fileBytes: 0 };
+  const file = { fileName: null, fileHeader: null, fileHash: '', fileBytes: 0 };
   return store.write((manager) => insertRecord(manager, { ...facts, ...file }, record));
 }
 

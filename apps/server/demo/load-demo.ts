@@ -44,7 +44,7 @@ async function addDemo({ store, spool, importer }: DemoParts): Promise<void> {
     if (read === null || (await manager.count(StoredSite)) > 0) return;
     const id = randomUUID();
     await insertSite(manager, { id, name: DEMO_SITE.name, document: DEMO_SITE }, now);
-    await importer.insert(manager, id, read);
+    await importer.insert(manager, { ...read, order: { ...read.order, siteId: id } });
   });
 }
 
@@ -52,7 +52,7 @@ async function addDemo({ store, spool, importer }: DemoParts): Promise<void> {
 async function readDemo(spool: Spool, importer: RecordImport) {
   const file = await spool.take(Readable.from(demoLoad(), { objectMode: false }), 'load.csv');
   try {
-    return await importer.read(DEMO_SITE.timeZone, file, {});
+    return await importer.read(await importer.order({ id: '', document: DEMO_SITE }, file, {}));
   } finally {
     await spool.discard(file);
   }

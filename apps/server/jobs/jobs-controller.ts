@@ -5,13 +5,18 @@ import type { Jobs } from '#libs/jobs/jobs.js';
 import type { Job } from '#libs/store/job.js';
 import { pathNumber } from '../path-number.js';
 import { Public } from '../public.js';
+import { discardImport, IMPORT } from '../records/import-jobs.js';
+import { Spool } from '../records/spool.js';
 import { JOBS } from '../tokens.js';
 import { showJob } from './show-job.js';
 
 /** Long work: how far it is, and how to stop it. */
 @Controller('api/jobs')
 export class JobsController {
-  constructor(@Inject(JOBS) private readonly jobs: Jobs) {}
+  constructor(
+    @Inject(JOBS) private readonly jobs: Jobs,
+    private readonly spool: Spool,
+  ) {}
 
   @Get(':jobId')
   @Public('Says how far a job is.')
@@ -22,7 +27,9 @@ export class JobsController {
   @Delete(':jobId')
   @Public('Cancels a job that is not finished.')
   async remove(@Param('jobId') jobId: string) {
-    return showJob(await this.jobs.cancel(pathNumber(jobId, 'job')));
+    const job = await this.jobs.cancel(pathNumber(jobId, 'job'));
+    if (job.kind === IMPORT) await discardImport(this.spool, job);
+    return showJob(job);
   }
 
   @Post(':jobId/cancel')

@@ -1,22 +1,20 @@
 import { Body, Controller, Get, Inject, Param, Post, Query, Res } from '@nestjs/common';
 import type { FastifyReply } from 'fastify';
-import type { ProblemJson } from '#libs/contract/error-body.js';
 import { type PlanRequest, planRequestSchema } from '#libs/contract/plan-request-schema.js';
 import { InputProblem } from '#libs/engine/index.js';
 import type { Jobs } from '#libs/jobs/jobs.js';
-import type { Job } from '#libs/store/job.js';
 import { ProposalFile } from '#libs/store/proposal-file.js';
 import { Revision } from '#libs/store/revision.js';
 import { Store } from '#libs/store/store.js';
 import { ContractPipe } from '../contract-pipe.js';
 import { showJob } from '../jobs/show-job.js';
 import { pathNumber } from '../path-number.js';
-import { StoredProblem } from '../problem-filter.js';
 import { Public } from '../public.js';
 import { findSite } from '../sites/find-site.js';
 import { JOBS } from '../tokens.js';
 import type { FrozenPlan } from './plan-request.js';
 import { Planning } from './planning.js';
+import { refuseEnded } from './refuse-ended.js';
 import { revisionHead, revisionJson } from './show-revision.js';
 import { waitS } from './wait-time.js';
 
@@ -108,11 +106,4 @@ export class PlanningController {
   #send(revision: Revision, reply: FastifyReply) {
     return reply.type('application/json').header('etag', `"${revision.contentHash}"`).send(revisionJson(revision));
   }
-}
-
-/** A job that ended without a revision is the requester's answer. */
-function refuseEnded(job: Job): void {
-  if (job.state === 'failed') throw new StoredProblem(job.error as ProblemJson);
-  if (job.state !== 'cancelled') return;
-  throw new InputProblem([{ code: 'conflict', expected: 'a job that is done', found: 'cancelled' }]);
 }

@@ -4,25 +4,20 @@ import { InputProblem } from '#libs/engine/index.js';
 import { recordColumns } from '#libs/meter-files/record-columns.js';
 import { readRecord } from '#libs/store/records.js';
 import { Revision } from '#libs/store/revision.js';
-import { noSite } from '#libs/store/sites.js';
 import { Store } from '#libs/store/store.js';
 import { StoredRecord } from '#libs/store/stored-record.js';
-import { StoredSite } from '#libs/store/stored-site.js';
 import { Public } from '../public.js';
 import { findSite } from '../sites/find-site.js';
 import { findRecord } from './find-record.js';
-import { RecordImport } from './record-import.js';
 import { showRecord } from './show-record.js';
-import { Spool, type SpooledFile } from './spool.js';
-import { readUploadOptions } from './upload-options.js';
+import { UploadIntake } from './upload-intake.js';
 
 /** Load records of a site, uploaded as meter files. */
 @Controller('api/sites/:siteId/records')
 export class RecordsController {
   constructor(
     private readonly store: Store,
-    private readonly spool: Spool,
-    private readonly importer: RecordImport,
+    private readonly intake: UploadIntake,
   ) {}
 
   @Get()
@@ -42,30 +37,33 @@ export class RecordsController {
     @Req() request: FastifyRequest,
     @Res({ passthrough: true }) reply: FastifyReply,
   ) {
-    const site = await findSite(this.store, siteId);
-    const fromQuery = readUploadOptions(request.query as Record<string, unknown>);
-    let file: SpooledFile | null = null;
-    try {
-      const upload = await this.spool.receive(request);
-      file = upload.file;
-      const options = { ...fromQuery, ...readUploadOptions(upload.fields) };
-      const { timeZone } = site.document as { timeZone: string };
-      const read = await this.importer.read(timeZone, file, options);
-      const record = await this.store.write(async (manager) => {
-        if (!(await manager.existsBy(StoredSite, { id: site.id }))) throw noSite(site.id);
-        return this.importer.insert(manager, site.id, read);
-      });
-      reply.header('location', `/api/sites/${site.id}/records/${record.id}`);
-      return showRecord(record);
-    } finally {
-      await this.spool.discard(file);
-    }
+    return this.intake.take(await findSite(this.store, siteId), null, request, reply);
   }
 
   @Get(':recordId')
   @Public('Gives a load record: what was read, from which file, in what quality.')
   async get(@Param('siteId') siteId: string, @Param('recordId') recordId: string) {
     return showRecord(await findRecord(this.store, siteId, recordId));
+  }
+
+  @Get(':recordId/revisions')
+  @Public('Lists the revisions of a load record up to the latest, which comes first.')
+  async revisions(@Param('siteId') siteId: string, @Param('recordId') recordId: string) {
+    const record = await findRecord(this.store, siteId, recordId);
+    const all = await this.store.read((manager) => manager.findBy(StoredRecord, { siteId: record.siteId }));
+    return { records: lineOf(record, all).map(showRecord) };
+  }
+
+  @Post(':recordId/revisions')
+  @Public('Extends or corrects a load record by a further meter file: the next revision, or 200 where it adds nothing.')
+  async extend(
+    @Param('siteId') siteId: string,
+    @Param('recordId') recordId: string,
+    @Req() request: FastifyRequest,
+    @Res({ passthrough: true }) reply: FastifyReply,
+  ) {
+    const previous = await findRecord(this.store, siteId, recordId);
+    return this.intake.take(await findSite(this.store, siteId), previous, request, reply);
   }
 
   @Get(':recordId/columns')
@@ -79,7 +77,7 @@ export class RecordsController {
 
   @Delete(':recordId')
   @HttpCode(204)
-  @Public('Removes a load record that no revision was made from.')
+  @Public('Removes a load record that no plan and no later revision was made from.')
   async remove(@Param('siteId') siteId: string, @Param('recordId') recordId: string) {
     const { id } = await findRecord(this.store, siteId, recordId);
     await this.store.write(async (manager) => {
@@ -88,7 +86,25 @@ export class RecordsController {
         const expected = 'a record that no revision was made from';
         throw new InputProblem([{ code: 'conflict', expected, found: `${uses} made from it` }]);
       }
+      if (await manager.existsBy(StoredRecord, { previousId: id })) {
+        const expected = 'the latest revision of its record';
+        throw new InputProblem([{ code: 'conflict', expected, found: 'one that was extended' }]);
+      }
       await manager.delete(StoredRecord, { id });
     });
   }
+}
+
+/** Every revision of one record, the latest first. */
+function lineOf(record: StoredRecord, all: readonly StoredRecord[]): StoredRecord[] {
+  const line = [record];
+  for (let next = all.find(({ previousId }) => previousId === line[0]!.id); next !== undefined; ) {
+    line.unshift(next);
+    next = all.find(({ previousId }) => previousId === line[0]!.id);
+  }
+  for (let before = all.find(({ id }) => id === record.previousId); before !== undefined; ) {
+    line.push(before);
+    before = all.find(({ id }) => id === line.at(-1)!.previousId);
+  }
+  return line;
 }

@@ -1,8 +1,8 @@
 import { createHash, randomUUID } from 'node:crypto';
 import { createWriteStream } from 'node:fs';
-import { mkdir, rm } from 'node:fs/promises';
+import { mkdir, readdir, rm } from 'node:fs/promises';
 import type { IncomingMessage } from 'node:http';
-import { join } from 'node:path';
+import { basename, join } from 'node:path';
 import { type Readable, Transform } from 'node:stream';
 import { pipeline } from 'node:stream/promises';
 import type { FastifyRequest } from 'fastify';
@@ -39,10 +39,25 @@ export class Spool {
     this.#mostBytes = mostBytes;
   }
 
-  /** Empties the folder: what stands there was left by a process that ended in the middle of an upload. */
-  async prepare(): Promise<void> {
-    await rm(this.#dir, { recursive: true, force: true });
+  /**
+   * Empties the folder: what stands there was left by a process that ended in the middle of an upload.
+   * @param wanted places of files whose import goes on
+   */
+  async prepare(wanted: readonly string[] = []): Promise<void> {
     await mkdir(this.#dir, { recursive: true });
+    for (const place of await readdir(this.#dir)) {
+      if (!wanted.includes(place)) await rm(join(this.#dir, place), { recursive: true, force: true });
+    }
+  }
+
+  /** Where a spooled file stands in the folder, to be found again by another process. */
+  placeOf(file: SpooledFile): string {
+    return basename(file.path);
+  }
+
+  /** The path of a file by its place. */
+  pathAt(place: string): string {
+    return join(this.#dir, basename(place));
   }
 
   /**
@@ -85,7 +100,7 @@ export class Spool {
     return { path, sha256: hash.digest('hex'), bytes: counter.bytes, name };
   }
 
-  async discard(file: SpooledFile | null): Promise<void> {
+  async discard(file: Pick<SpooledFile, 'path'> | null): Promise<void> {
     if (file !== null) await rm(file.path, { force: true });
   }
 

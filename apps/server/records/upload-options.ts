@@ -2,12 +2,17 @@ import type { MeterMap } from '#libs/contract/meter-map.js';
 import { readMeterMap } from '#libs/contract/meter-map-schema.js';
 import { isTimeZone } from '#libs/contract/time-zone.js';
 import { InputProblem, type Problem } from '#libs/engine/index.js';
+import { waitS } from '../planning/wait-time.js';
 
 /** What the sender says about a meter file. */
 export interface UploadOptions {
   format?: string;
   timeZone?: string;
   map?: MeterMap;
+  /** name of kept answers to read the file with */
+  keptMap?: string;
+  /** how long the sender waits before it is given a job to follow; absent, until the file is read [s] */
+  waitS?: number;
 }
 
 /** How each field is read: into the options, or to a problem. */
@@ -21,6 +26,8 @@ const READERS: Record<string, (text: string) => UploadOptions | Omit<Problem, 'p
     const json = parsed(text);
     return json === undefined ? { code: 'unreadable', expected: 'a map as JSON' } : { map: readMeterMap(json) };
   },
+  keptMap: (keptMap) => ({ keptMap }),
+  wait: (wait) => ({ waitS: waitS({ wait }) }),
   // The file's own name; the spool takes it.
   name: () => ({}),
 };

@@ -1,4 +1,5 @@
 import type { ProblemJson } from '#libs/contract/error-body.js';
+import type { MeterMap } from '#libs/contract/meter-map.js';
 import type { RecordSummary, Remark, Result, Verdict } from '#libs/engine/index.js';
 
 /** A site file as JSON: what was typed into it, units and all. */
@@ -37,8 +38,12 @@ export interface QualityShown {
 /** A load record as the API gives it. */
 export interface RecordShown {
   id: string;
+  /** counts the revisions of one record from 1 */
+  revision: number;
+  /** the revision it extends, null for the first */
+  previousId: string | null;
   hash: string;
-  file: { name: string | null; sha256: string; bytes: number };
+  file: { name: string | null; sha256: string; bytes: number; header: string | null };
   record: RecordSummary;
   quality: QualityShown;
   createdAt: string;
@@ -71,11 +76,23 @@ export interface RevisionShown extends RevisionHeadShown {
 /** A job as the API gives it. */
 export interface JobShown {
   id: number;
-  kind: 'plan' | 'assess';
+  kind: 'plan' | 'assess' | 'import';
   state: 'queued' | 'running' | 'done' | 'failed' | 'cancelled';
   progress: number;
   error: ProblemJson | null;
   revision: number | null;
+  /** [s], null before anything is known */
+  remainingS: number | null;
+  bytesPerS: number | null;
+  links: { self: string; record: string | null };
+}
+
+/** Answers about meter files that are kept under a name. */
+export interface KeptMapShown {
+  id: string;
+  name: string;
+  map: MeterMap;
+  version: number;
 }
 
 export type { Remark };

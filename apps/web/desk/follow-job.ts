@@ -4,13 +4,16 @@ import type { JobShown } from '../api/shown.js';
 /** How a job ended. */
 export type JobEnd = JobShown & { state: 'done' | 'failed' | 'cancelled' };
 
-const keyOf = (siteId: string) => `varwright:job:${siteId}`;
+/** What a browser waits for: a plan or an assessment, or a file that is being read. */
+export type Awaited = 'job' | 'import';
+
+const keyOf = (siteId: string, what: Awaited) => `varwright:${what}:${siteId}`;
 /** Asked so often [ms]. */
 const ASK_AGAIN_MS = 400;
 
 /** @returns the job this browser waited for when the page was left */
-export function keptJob(siteId: string): number | null {
-  const id = Number(localStorage.getItem(keyOf(siteId)) ?? Number.NaN);
+export function keptJob(siteId: string, what: Awaited = 'job'): number | null {
+  const id = Number(localStorage.getItem(keyOf(siteId, what)) ?? Number.NaN);
   return Number.isInteger(id) && id > 0 ? id : null;
 }
 
@@ -22,8 +25,9 @@ export function followJob(
   siteId: string,
   jobId: number,
   ears: { moved(job: JobShown): void; ended(end: JobEnd): void },
+  what: Awaited = 'job',
 ): () => void {
-  localStorage.setItem(keyOf(siteId), String(jobId));
+  localStorage.setItem(keyOf(siteId, what), String(jobId));
   let isOver = false;
   let timer: ReturnType<typeof setTimeout> | undefined;
   const hear = (job: JobShown) => {
@@ -33,7 +37,7 @@ export function followJob(
       return;
     }
     isOver = true;
-    localStorage.removeItem(keyOf(siteId));
+    localStorage.removeItem(keyOf(siteId, what));
     ears.ended(job);
   };
   const askAgain = async () => {
@@ -42,7 +46,7 @@ export function followJob(
     } catch (error) {
       if (error instanceof Refused) {
         isOver = true;
-        localStorage.removeItem(keyOf(siteId));
+        localStorage.removeItem(keyOf(siteId, what));
       }
     }
     if (!isOver) timer = setTimeout(() => void askAgain(), ASK_AGAIN_MS);

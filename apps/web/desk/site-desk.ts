@@ -123,17 +123,10 @@ export class SiteDesk {
     this.#set({ saving: false });
   }
 
-  /**
-   * Reads a meter file into a record.
-   * @throws Refused with problems or questions
-   */
-  async upload(file: File, options: Record<string, string>): Promise<RecordShown> {
-    const query = new URLSearchParams({ name: file.name, ...options });
-    const asking = { method: 'POST' as const, body: file, headers: { 'content-type': 'application/octet-stream' } };
-    const { body } = await ask<RecordShown>(`${this.#path()}/records?${query}`, asking);
+  /** A meter file became a record: it is the one that is looked at from here on. */
+  async recordAdded(): Promise<void> {
     await this.#refresh();
     this.#prepareEngine();
-    return body;
   }
 
   async cancelJob(): Promise<void> {

@@ -1,44 +1,51 @@
-import { type DragEvent, useState } from 'react';
-import type { QuestionAsked } from '#libs/contract/question.js';
-import { formatQuantity } from '#libs/present/format-number.js';
-import { NoConnection, Refused } from '../api/ask.js';
+import { type DragEvent, useEffect, useState } from 'react';
+import { mergedMap } from '#libs/contract/merged-map.js';
+import { ask } from '../api/ask.js';
+import type { KeptMapShown } from '../api/shown.js';
 import { useDesk } from '../desk/use-desk.js';
 import { Mark } from '../draw/verdict-mark.js';
+import { AskedInPlace } from './asked-in-place.js';
+import { FileChoices } from './file-choices.js';
+import { ImportProgress } from './import-progress.js';
+import { KeepAnswers } from './keep-answers.js';
+import { useMeterFile } from './use-meter-file.js';
 
 /** Where a meter file is dropped, what it leaves open is asked, and what could not be read is said. */
 export function MeterFileDrop() {
   const { desk, state } = useDesk();
-  const [file, setFile] = useState<File | null>(null);
+  const { state: reading, read, answer } = useMeterFile(desk);
+  const [keptMaps, setKeptMaps] = useState<KeptMapShown[]>([]);
+  const [keptMap, setKeptMap] = useState('');
+  const [isFurther, setFurther] = useState(false);
   const [isOver, setOver] = useState(false);
-  const [isReading, setReading] = useState(false);
-  const [refusals, setRefusals] = useState<string[]>([]);
-  const [questions, setQuestions] = useState<readonly QuestionAsked[]>([]);
-  const [map, setMap] = useState<object>({});
-  const read = async (chosen: File, answers: object) => {
-    setFile(chosen);
-    setMap(answers);
-    setReading(true);
-    setRefusals([]);
-    setQuestions([]);
-    try {
-      const options: Record<string, string> = Object.keys(answers).length === 0 ? {} : { map: JSON.stringify(answers) };
-      await desk.upload(chosen, options);
-    } catch (error) {
-      const asked = error instanceof Refused ? (error.problem.questions ?? []) : [];
-      setQuestions(asked);
-      if (asked.length === 0) setRefusals(refusalWords(error));
-    }
-    setReading(false);
+  useEffect(() => {
+    ask<{ keptMaps: KeptMapShown[] }>('/api/kept-maps').then(
+      ({ body }) => setKeptMaps(body.keptMaps),
+      () => undefined,
+    );
+  }, []);
+  const take = (file: File | undefined) => {
+    if (file !== undefined) read(file, { answers: {}, keptMap, extendsId: (isFurther && state.records[0]?.id) || '' });
   };
   const drop = (event: DragEvent) => {
     event.preventDefault();
     setOver(false);
-    const dropped = event.dataTransfer.files[0];
-    if (dropped !== undefined) void read(dropped, {});
+    take(event.dataTransfer.files[0]);
   };
+  const { answers } = reading.said;
+  const used = keptMaps.find(({ name }) => name === reading.said.keptMap);
   return (
     <section className="section" aria-labelledby="drop">
       <h2 id="drop">{state.records.length === 0 ? 'The meter file' : 'Another meter file'}</h2>
+      <FileChoices
+        record={state.records[0]}
+        keptMaps={keptMaps}
+        chosen={{ isFurther, keptMap }}
+        onChoose={(chosen) => {
+          setFurther(chosen.isFurther);
+          setKeptMap(chosen.keptMap);
+        }}
+      />
       <label
         className={isOver ? 'drop over' : 'drop'}
         onDragOver={(event) => {
@@ -51,85 +58,47 @@ export function MeterFileDrop() {
         Drop it here, or choose it. Time, active and reactive power or energy, in any of the usual spellings; NEM12 as
         well.
         <br />
-        <input
-          type="file"
-          onChange={({ target }) => {
-            const chosen = target.files?.[0];
-            if (chosen !== undefined) void read(chosen, {});
-          }}
-        />
+        <input type="file" disabled={reading.isReading} onChange={({ target }) => take(target.files?.[0])} />
       </label>
       <p className="row" role="status">
-        {isReading ? `Reading ${file?.name}.` : ''}
+        {reading.isReading ? `Reading ${reading.file?.name ?? 'the file'}.` : ''}
       </p>
-      {refusals.map((words) => (
+      {reading.job === null ? null : <ImportProgress job={reading.job} />}
+      {reading.refusals.map((words) => (
         <p key={words} className="refusal" role="alert">
           <Mark verdict="avoid" />
           <span>{words}</span>
         </p>
       ))}
-      {questions.map((question) => (
+      {reading.offered.map(({ id, name }) => (
+        <p key={id} className="row gap">
+          <button type="button" className="button" onClick={() => answer({ keptMap: name })}>
+            Read it with the answers kept as “{name}”
+          </button>
+          <span className="caption">They were given for a file with the same header.</span>
+        </p>
+      ))}
+      {reading.questions.map((question) => (
         <AskedInPlace
           key={question.id}
           question={question}
-          onAnswer={(answer) => {
-            if (file !== null) void read(file, { ...map, ...answer });
-          }}
+          timeZone={state.site?.site.timeZone ?? 'UTC'}
+          onAnswer={reading.file === null ? undefined : (chosen) => answer({ answers: chosen })}
         />
       ))}
+      {reading.read === null ? null : (
+        <KeepAnswers
+          key={reading.read.id}
+          answers={used === undefined || isEmpty(answers) ? answers : mergedMap(used.map, answers)}
+          record={reading.read}
+          onKept={(kept) => setKeptMaps([...keptMaps, kept])}
+        />
+      )}
     </section>
   );
 }
 
-function refusalWords(error: unknown): string[] {
-  if (error instanceof NoConnection) return ['No connection. Drop the file again when it is back.'];
-  if (!(error instanceof Refused)) return [String(error)];
-  const { problems, detail } = error.problem;
-  if (problems.length === 0) return [detail];
-  return problems.slice(0, 12).map(({ row, column, expected, found }) => {
-    const place = row === undefined ? '' : `Row ${row}${column === undefined ? '' : `, column ${column}`}: `;
-    return `${place}needs ${expected}; found ${found}.`;
-  });
-}
-
-/** A question of the reader with every reading that makes sense; no answer is nearer than another. */
-function AskedInPlace({ question, onAnswer }: { question: QuestionAsked; onAnswer: (map: object) => void }) {
-  return (
-    <section className="notice" aria-label={question.about}>
-      <h3>{question.about}</h3>
-      <p className="caption">Every reading below fits the file. Choose one.</p>
-      {question.readings.map((reading, at) => (
-        <div key={at} className="row gap">
-          <button type="button" className="button" onClick={() => onAnswer(reading.map)}>
-            {mapWords(reading.map)}
-          </button>
-          <span className="caption num">
-            highest {formatQuantity(reading.maxKw, 'kW')}, {formatQuantity(reading.activeKwh / 1000, 'MWh')} in all
-          </span>
-          <details>
-            <summary className="way">First rows</summary>
-            <pre className="note">{reading.firstRows.map((row) => row.join('   ')).join('\n')}</pre>
-          </details>
-        </div>
-      ))}
-    </section>
-  );
-}
-
-/** What a reading takes the file for: "energy", "active in W, reactive in var". */
-function mapWords(map: object): string {
-  const parts = Object.entries(map).map(([name, value]) => {
-    if (value === null || typeof value !== 'object') {
-      return name === 'quantity'
-        ? `${value} in ${value === 'power' ? 'kW and kvar' : 'kWh and kvarh'}`
-        : `${spaced(name)}: ${spaced(String(value))}`;
-    }
-    const inner = Object.entries(value as object).sort(([one], [other]) => (one < other ? -1 : 1));
-    return inner.map(([column, word]) => `${spaced(column)} ${name === 'units' ? 'in' : 'from'} ${word}`).join(', ');
-  });
-  return parts.join(', ');
-}
-
-function spaced(word: string): string {
-  return word.replace(/[A-Z]/g, (letter) => ` ${letter.toLowerCase()}`);
+/** Answers that were only taken from a name need no other. */
+function isEmpty(answers: object): boolean {
+  return Object.keys(answers).length === 0;
 }

@@ -9,6 +9,7 @@ import { TextField } from '../field/text-field.js';
 import { Headline } from '../working/headline.js';
 import { MeterFileDrop } from './meter-file-drop.js';
 import { ReadingFindings } from './reading-findings.js';
+import { RecordRevisions } from './record-revisions.js';
 import { TraceFigure } from './trace-figure.js';
 
 const DAY_S = 86_400;
@@ -69,6 +70,7 @@ export function RecordSheet() {
         </section>
       </div>
       {record === undefined ? null : <ReadingFindings record={record} />}
+      {record === undefined ? null : <RecordRevisions record={record} records={state.records} />}
     </>
   );
 }

@@ -1,5 +1,6 @@
 import type { MeterRepair } from '#libs/contract/meter-map.js';
 import { InputProblem, localTime, type ZoneTable } from '#libs/engine/index.js';
+import { MAX_INTERVALS } from '../meter-format.js';
 import type { RecordColumns } from './build-columns.js';
 
 /** Repaired columns and how many intervals were filled. */
@@ -23,7 +24,7 @@ const STATES: readonly Series[] = ['connectedKvar', 'standby'];
  * @param upToS longest gap that is filled [s]
  * @param zone the site's zone
  * @returns columns with the gaps filled
- * @throws InputProblem where no longest gap is given
+ * @throws InputProblem where no longest gap is given, or the filled record would be too long
  */
 export function repairGaps(
   columns: RecordColumns,
@@ -71,6 +72,7 @@ function filledSlots({ beginS, intervalS }: RecordColumns, upToS: number): Slots
     source.push(i);
     const missing = i + 1 < beginS.length ? Math.round((beginS[i + 1]! - beginS[i]!) / intervalS) - 1 : 0;
     if (missing === 0 || missing * intervalS > upToS) continue;
+    refuseTooLong(times.length + missing);
     gaps.push({ from: times.length, to: times.length + missing });
     for (let k = 1; k <= missing; k++) {
       times.push(beginS[i]! + k * intervalS);
@@ -78,6 +80,12 @@ function filledSlots({ beginS, intervalS }: RecordColumns, upToS: number): Slots
     }
   }
   return { beginS: Float64Array.from(times), source: Int32Array.from(source), gaps };
+}
+
+function refuseTooLong(intervals: number): void {
+  if (intervals <= MAX_INTERVALS) return;
+  const expected = `a record of at most ${MAX_INTERVALS} intervals`;
+  throw new InputProblem([{ code: 'too-large', path: 'upToS', expected, found: `${intervals} with the gaps filled` }]);
 }
 
 interface Filling {
