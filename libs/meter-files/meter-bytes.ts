@@ -95,7 +95,8 @@ async function firstOf(raw: AsyncGenerator<Uint8Array>): Promise<Uint8Array> {
   while (size < HEAD_BYTES) {
     const step = await raw.next();
     if (step.done) break;
-    chunks.push(step.value.slice());
+    // a copy: `slice` of a Buffer would share its memory
+    chunks.push(new Uint8Array(step.value));
     size += step.value.length;
   }
   const all = new Uint8Array(size);
