@@ -25,7 +25,6 @@ export function findings({ result }: Outcome | EstimateOutcome): Finding[] {
     ...result.reasons.map(remarkFinding),
     ...notJudgedFinding(result.duties),
     ...(result.record?.notes ?? []).map(remarkFinding),
-    ...(result.record === null ? result.estimate.refused : []).map(remarkFinding),
   ];
   return FINDING_LEVELS.flatMap((level) => all.filter((finding) => finding.level === level));
 }

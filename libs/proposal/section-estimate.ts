@@ -21,13 +21,13 @@ const BILL_COLUMNS: Column[] = [
 ];
 
 const LIST_COLUMNS: Column[] = [
-  { head: 'equipment', share: 34 },
+  { head: 'equipment', share: 30 },
   { head: 'number', share: 10, align: 'right' },
   { head: 'rated kW', share: 12, align: 'right' },
   { head: 'efficiency', share: 13, align: 'right' },
   { head: 'power factor', share: 14, align: 'right' },
   { head: 'load factor', share: 13, align: 'right' },
-  { head: 'coincidence', share: 14, align: 'right' },
+  { head: 'coincidence', share: 20, align: 'right' },
   { head: 'kW', share: 12, align: 'right' },
   { head: 'kvar', share: 12, align: 'right' },
 ];
