@@ -97,7 +97,7 @@ export function isChanged({ site, document, trial, typed }: DeskState): boolean 
 
 /** Keys of the site file by the station at which they are entered, left to right. */
 const STATION_KEYS: [Station, readonly string[]][] = [
-  ['record', ['timeZone', 'recordedBank']],
+  ['record', ['timeZone', 'recordedBank', 'estimate']],
   ['supply', ['bus', 'supply', 'loads', 'limits', 'rules', 'frequencyHz', 'meteredAt']],
   ['need', ['target']],
   ['bank', ['control', 'catalogue', 'bank']],
