@@ -105,7 +105,7 @@ function maximumProblems(bill: MonthlyBill, k: number, hours: number): Problem[]
   ];
   return bounds.flatMap(({ key, most, mean, unit }): Problem[] => {
     if (most === undefined || mean <= most * (1 + ROUNDING_SHARE)) return [];
-    const expected = `at least the mean of the month, ${mean} over its ${hours} hours`;
+    const expected = `at least the mean of the month, ${Number(mean.toPrecision(4))} over its ${hours} hours`;
     return [{ code: 'inconsistent', path: `estimate.bills[${k}].${key}`, expected, found: `${most}`, unit }];
   });
 }
