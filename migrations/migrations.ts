@@ -3,8 +3,4 @@ import { ExtendedRecords1764634000000 } from './1764634000000-extended-records.j
 import { EstimatedRevisions1764637200000 } from './1764637200000-estimated-revisions.js';
 
 /** Every change of the schema, oldest first. */
-export const migrations = [
-  FirstTables1764547200000,
-  ExtendedRecords1764634000000,
-  EstimatedRevisions1764637200000,
-];
+export const migrations = [FirstTables1764547200000, ExtendedRecords1764634000000, EstimatedRevisions1764637200000];
