@@ -57,6 +57,7 @@ export * from './network/bus-columns.js';
 export * from './network/bus-flow.js';
 export * from './network/conductor-ohm.js';
 export * from './network/corners.js';
+export * from './network/eliminated-network.js';
 export * from './network/flow.js';
 export * from './network/loads.js';
 export * from './network/network-check.js';
