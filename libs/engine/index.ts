@@ -70,6 +70,7 @@ export * from './network/scan-into.js';
 export * from './network/settle-topology.js';
 export * from './network/spectra.js';
 export * from './network/stage-admittance.js';
+export * from './network/stage-kinds.js';
 export * from './network/summation.js';
 export * from './network/topology.js';
 export * from './operation/control.js';

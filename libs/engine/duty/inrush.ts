@@ -1,5 +1,6 @@
-import type { Bank } from '../layout/bank.js';
+import type { Bank, StageGroup } from '../layout/bank.js';
 import { ratedA, stageOhm } from '../layout/stage.js';
+import { bankStates, stageKinds } from '../network/stage-kinds.js';
 import type { SeriesOhm } from '../supply/supply-path.js';
 import { closingPeak } from './closing-circuit.js';
 import type { ClosingCircuit, SeriesBranch } from './loop-impedance.js';
@@ -121,7 +122,8 @@ export interface Closing {
 }
 
 /**
- * Every closing of one stage of a group: alone first, then onto every level at which one is left. The inductance between
+ * Every closing of one stage of a group: alone first, then onto every electrical state in which one is left; stages of one
+ * kind are one branch of their sum. The inductance between
  * stages counts once, before the closing stage, as in the closed form; damping loads and harmonics are left out.
  * @param bank the bank
  * @param index the closing stage's group
@@ -131,12 +133,9 @@ export interface Closing {
  */
 export function closings(bank: Bank, index: number, site: ClosingSite): Closing[] {
   const omega = 2 * Math.PI * site.frequencyHz;
-  const branches = bank.groups.map((group) => {
-    const ohm = stageOhm(group);
-    const farad = 1 / (omega * ohm.capacitiveOhm);
-    return { rOhm: ohm.resistanceOhm, inductanceH: ohm.inductiveOhm / omega, capacitanceF: farad };
-  });
-  const own = branches[index]!;
+  const kinds = stageKinds(bank);
+  const branches = kinds.first.map((group) => stageBranchAt(group, omega));
+  const own = stageBranchAt(bank.groups[index]!, omega);
   const ontoOwn = { ...own, inductanceH: own.inductanceH + bank.interStageUh * 1e-6 };
   const supply = {
     sourceOhm: site.supplyOhm.rOhm,
@@ -144,9 +143,11 @@ export function closings(bank: Bank, index: number, site: ClosingSite): Closing[
     crestV: (Math.SQRT2 * site.nominalV) / Math.sqrt(3),
     frequencyHz: site.frequencyHz,
   };
-  const onto = site.vectors.flatMap((vector): Closing[] => {
-    if (vector[index]! >= bank.groups[index]!.count) return [];
-    const connected = branches.flatMap((branch, g) => (vector[g]! > 0 ? [scaledBranch(branch, vector[g]!)] : []));
+  const closable = site.vectors.filter((vector) => vector[index]! < bank.groups[index]!.count);
+  const onto = bankStates(kinds, closable).flatMap(({ vector, shares }): Closing[] => {
+    const connected = branches.flatMap((branch, kind) =>
+      shares[kind]! > 0 ? [scaledBranch(branch, shares[kind]!)] : [],
+    );
     return connected.length === 0 ? [] : [{ circuit: { ...supply, connected, closing: ontoOwn }, vector }];
   });
   const alone = { circuit: { ...supply, connected: [], closing: own }, vector: new Int32Array(bank.groups.length) };
@@ -162,10 +163,24 @@ export function closings(bank: Bank, index: number, site: ClosingSite): Closing[
  * @source method-inrush
  */
 export function exactInrush(bank: Bank, index: number, site: ClosingSite): ExactInrush | null {
-  const peaksA = closings(bank, index, site).map(({ circuit }) => closingPeak(circuit).peakA);
-  const worstPeakA = peaksA.reduce((worst, peakA) => Math.max(worst, peakA));
+  const [alone, ...onto] = closings(bank, index, site);
+  const singlePeakA = closingPeak(alone!.circuit).peakA;
+  // The higher the level the greater the peak, as a rule: from the top, most of the rest need not be followed.
+  const worstPeakA = onto.reduceRight(
+    (worst, { circuit }) => Math.max(worst, closingPeak(circuit, worst).peakA),
+    singlePeakA,
+  );
   // A circuit far from any that is built (a reactor of nothing but resistance) has modes that are not found.
-  return Number.isFinite(worstPeakA) ? { singlePeakA: peaksA[0]!, worstPeakA } : null;
+  return Number.isFinite(worstPeakA) ? { singlePeakA, worstPeakA } : null;
+}
+
+function stageBranchAt(group: StageGroup, omega: number): SeriesBranch {
+  const ohm = stageOhm(group);
+  return {
+    rOhm: ohm.resistanceOhm,
+    inductanceH: ohm.inductiveOhm / omega,
+    capacitanceF: 1 / (omega * ohm.capacitiveOhm),
+  };
 }
 
 // Equal branches in parallel are one branch of their sum.

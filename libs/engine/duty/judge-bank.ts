@@ -97,7 +97,7 @@ export function judgeBank(model: NetworkModel, bank: Bank, levels: Level[], basi
     ]),
     ...bankDuties.duties(),
   ];
-  const nearPeak = nearestPeak(model, tables, finder, PEAK_REACH_H);
+  const nearPeak = nearestPeak(model, tables, new PeakFinder(model, bank, PEAK_REACH_H), PEAK_REACH_H);
   const distortingSharePct = plainSharePct(bank, basis);
   const watched = nearPeak !== null || distortingSharePct !== null || (networkUnknown && bank.groups.length > 0);
   const worst = duties.reduce<Verdict>((verdict, duty) => graver(verdict, duty.verdict), 'clear');

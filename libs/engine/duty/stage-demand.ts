@@ -48,7 +48,7 @@ export function bankDemand(
   eachFlow(model, bankModel(model, bank, levels), (flow) => {
     let lossW = 0;
     for (const [g, branch] of branches[flow.corner.factors]!.entries()) {
-      if (flow.vector[g] === 0) continue;
+      if (flow.connected[g] === 0) continue;
       const rise = 1 + flow.levelKvar / (site.shortCircuitMinMva * 1000);
       const ratio = branchRatio(branch);
       const fundamentalA = site.highestV / Math.sqrt(3) / (branch.capacitiveOhm * (1 - ratio));

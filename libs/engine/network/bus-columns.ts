@@ -51,11 +51,11 @@ export function networkColumns(model: NetworkModel, network: number, ordersH: Fl
 /**
  * Admittance of the bank at a count vector: Y = Σ n_g·y_g.
  * @param stages y of one stage of each group [S], length n
- * @param vector connected stages per group
+ * @param vector connected stages per group, or shares of each kind
  * @param length n
  * @returns Y [S]
  */
-export function bankColumn(stages: readonly ComplexColumn[], vector: Int32Array, length: number): ComplexColumn {
+export function bankColumn(stages: readonly ComplexColumn[], vector: ArrayLike<number>, length: number): ComplexColumn {
   const out: ComplexColumn = { re: new Float64Array(length), im: new Float64Array(length) };
   for (const [g, { re, im }] of stages.entries()) {
     const count = vector[g]!;

@@ -143,7 +143,7 @@ export function nearestPeak(model: NetworkModel, bank: BankModel, finder: PeakFi
   if (model.excitation.ordersH.length === 0) return null;
   let nearest: NearPeak | null = null;
   let leastH = Number.POSITIVE_INFINITY;
-  for (const peak of everyPeak(model, bank, finder, reachH)) {
+  for (const peak of everyPeak(model, bank, finder, () => Math.min(reachH, leastH))) {
     const awayH = Math.abs(peak.peakOrderH - peak.presentOrderH);
     if (awayH > reachH || awayH >= leastH) continue;
     leastH = awayH;
@@ -163,22 +163,27 @@ export function nearestPeak(model: NetworkModel, bank: BankModel, finder: PeakFi
  */
 export function hasNearPeak(model: NetworkModel, bank: BankModel, finder: PeakFinder, reachH: number): boolean {
   if (model.excitation.ordersH.length === 0) return false;
-  for (const { peakOrderH, presentOrderH } of everyPeak(model, bank, finder, reachH)) {
+  for (const { peakOrderH, presentOrderH } of everyPeak(model, bank, finder, () => reachH)) {
     if (Math.abs(peakOrderH - presentOrderH) <= reachH) return true;
   }
   return false;
 }
 
-// Levels above 0, corners, count vectors, buses, in that order of nesting; each peak with the order present it is
-// nearest to.
-function* everyPeak(model: NetworkModel, bank: BankModel, finder: PeakFinder, reachH: number): Generator<NearPeak> {
+// Levels above 0, corners, electrical states, buses, in that order of nesting; each peak with the order present it is
+// nearest to. Brackets wholly out of reach are not refined.
+function* everyPeak(
+  model: NetworkModel,
+  bank: BankModel,
+  finder: PeakFinder,
+  reachH: () => number,
+): Generator<NearPeak> {
   const within = (lowH: number, highH: number): boolean =>
-    model.excitation.ordersH.some((h) => h >= lowH - reachH && h <= highH + reachH);
-  for (const { levelKvar, vectors } of bank.levels.slice(1)) {
+    model.excitation.ordersH.some((h) => h >= lowH - reachH() && h <= highH + reachH());
+  for (const [k, { levelKvar }] of bank.levels.slice(1).entries()) {
     for (const corner of model.corners.corners) {
-      for (const vector of vectors) {
-        for (const [k, bus] of model.buses.entries()) {
-          for (const { orderH } of finder.peaks(vector, corner, k, within)) {
+      for (const { vector } of bank.states[k + 1]!) {
+        for (const [at, bus] of model.buses.entries()) {
+          for (const { orderH } of finder.peaks(vector, corner, at, within)) {
             const presentOrderH = nearestOrder(model.excitation.ordersH, orderH);
             yield { bus, levelKvar, corner: corner.corner, peakOrderH: orderH, presentOrderH };
           }
