@@ -9,6 +9,7 @@ import {
   firmVerdict,
   networkScene,
   type Outcome,
+  type SettledSite,
   type Site,
   settleControl,
   UTC_TABLE,
@@ -160,22 +161,34 @@ function networkObjections(random: Chance): Objections {
     .filter((duty) => duty.verdict === 'avoid' && incomplete(duty))
     .map(({ name }) => `${name} does not say where`);
   if (verdict !== 'clear') return { verdict, said };
-  const limits = voltageLimits(scene.site.rules, nominalV, scene.site.emcClass);
   const { corners } = scene.model.corners;
   for (let k = 0; k < 2; k++) {
     const index = random.whole(0, corners.length - 1);
     const toleranceSign = index === 0 ? 0 : index <= (corners.length - 1) / 2 ? -1 : 1;
     const counts = random.oneOf(scene.levels).vectors[0]!;
     const pct = busVoltagesPct(site, { corner: corners[index]!.corner, toleranceSign, counts });
-    for (const [bus, name] of buses.entries()) {
-      const distortion = Math.hypot(...pct.map((ofOrder) => ofOrder[bus]!));
-      if (distortion > limits.distortionPct * (1 + 1e-9)) said.push(`clear, yet ${distortion} % at ${name}`);
-      for (const [i, orderH] of ORDERS_H.entries()) {
-        if (pct[i]![bus]! > limits.orderPct(orderH)! * (1 + 1e-9)) said.push(`clear, yet order ${orderH} at ${name}`);
-      }
-    }
+    said.push(
+      ...buses.flatMap((name, bus) =>
+        passed(
+          scene.site,
+          name,
+          pct.map((ofOrder) => ofOrder[bus]!),
+        ),
+      ),
+    );
   }
   return { verdict, said };
+}
+
+// Limits passed by a bus's voltages, one an order.
+function passed(site: SettledSite, bus: string, pct: number[]): string[] {
+  const limits = voltageLimits(site.rules, site.nominalV, site.emcClass);
+  const over = ORDERS_H.filter((orderH, i) => pct[i]! > limits.orderPct(orderH)! * (1 + 1e-9));
+  const distortion = Math.hypot(...pct);
+  return [
+    ...over.map((orderH) => `clear, yet order ${orderH} at ${bus}`),
+    ...(distortion > limits.distortionPct * (1 + 1e-9) ? [`clear, yet ${distortion} % at ${bus}`] : []),
+  ];
 }
 
 describe(`verdicts on ${SITES} generated sites (seed ${SEED})`, () => {

@@ -28,15 +28,17 @@ export function slowCircuit(lines: readonly string[], frequencyHz: number): Map<
   const at = (node: string): number => (node === '0' ? -1 : nodes.get(node)!);
   const omega = 2 * Math.PI * frequencyHz;
   for (const { kind, from, to, value } of elements) {
-    const [a, b] = [at(from), at(to)];
-    if (kind === 'r') system.admit(a, b, 1 / value, 0);
-    else if (kind === 'l') system.admit(a, b, 0, -1 / (omega * value));
-    else if (kind === 'c') system.admit(a, b, 0, omega * value);
-    else if (kind === 'i') system.inject(a, b, value);
+    if (kind === 'i') system.inject(at(from), at(to), value);
+    else if (kind !== 'v') system.admit(at(from), at(to), admittanceOf(kind, value, omega));
   }
   for (const [k, { from, to, value }] of sources.entries()) system.hold(nodes.size + k, at(from), at(to), value);
   const { re, im } = system.solve();
   return new Map([...nodes].map(([node, k]) => [node, Math.hypot(re[k]!, im[k]!)]));
+}
+
+function admittanceOf(kind: string, value: number, omega: number): [g: number, s: number] {
+  if (kind === 'r') return [1 / value, 0];
+  return [0, kind === 'l' ? -1 / (omega * value) : omega * value];
 }
 
 class System {
@@ -51,7 +53,7 @@ class System {
     this.#im = Array.from({ length: n }, () => new Float64Array(n + 1));
   }
 
-  admit(a: number, b: number, g: number, s: number): void {
+  admit(a: number, b: number, [g, s]: [g: number, s: number]): void {
     for (const [row, column, sign] of [
       [a, a, 1],
       [b, b, 1],
@@ -84,31 +86,41 @@ class System {
 
   // Gauss and Jordan, the greatest of each column first.
   solve(): { re: number[]; im: number[] } {
-    const [re, im, n] = [this.#re, this.#im, this.#n];
-    for (let k = 0; k < n; k++) {
-      let best = k;
-      const size = (row: number): number => re[row]![k]! ** 2 + im[row]![k]! ** 2;
-      for (let row = k + 1; row < n; row++) if (size(row) > size(best)) best = row;
-      [re[k], re[best]] = [re[best]!, re[k]!];
-      [im[k], im[best]] = [im[best]!, im[k]!];
-      const [kr, ki, square] = [re[k]!, im[k]!, size(k)];
-      for (let row = 0; row < n; row++) {
-        if (row === k || (re[row]![k] === 0 && im[row]![k] === 0)) continue;
-        const [rr, ri] = [re[row]!, im[row]!];
-        const fr = (rr[k]! * kr[k]! + ri[k]! * ki[k]!) / square;
-        const fi = (ri[k]! * kr[k]! - rr[k]! * ki[k]!) / square;
-        for (let c = k; c <= n; c++) {
-          rr[c]! -= fr * kr[c]! - fi * ki[c]!;
-          ri[c]! -= fr * ki[c]! + fi * kr[c]!;
-        }
-      }
+    for (let k = 0; k < this.#n; k++) {
+      this.#bringGreatest(k);
+      for (let row = 0; row < this.#n; row++) if (row !== k) this.#eliminate(k, row);
     }
-    const out = { re: new Array<number>(n), im: new Array<number>(n) };
-    for (let k = 0; k < n; k++) {
-      const square = re[k]![k]! ** 2 + im[k]![k]! ** 2;
-      out.re[k] = (re[k]![n]! * re[k]![k]! + im[k]![n]! * im[k]![k]!) / square;
-      out.im[k] = (im[k]![n]! * re[k]![k]! - re[k]![n]! * im[k]![k]!) / square;
+    const out = { re: new Array<number>(this.#n), im: new Array<number>(this.#n) };
+    for (let k = 0; k < this.#n; k++) {
+      const [re, im] = this.#over(k, k, this.#n);
+      out.re[k] = re;
+      out.im[k] = im;
     }
     return out;
+  }
+
+  #bringGreatest(k: number): void {
+    let best = k;
+    const size = (row: number): number => this.#re[row]![k]! ** 2 + this.#im[row]![k]! ** 2;
+    for (let row = k + 1; row < this.#n; row++) if (size(row) > size(best)) best = row;
+    for (const part of [this.#re, this.#im]) [part[k], part[best]] = [part[best]!, part[k]!];
+  }
+
+  // Entry of a row over the pivot of row k.
+  #over(k: number, row: number, column: number): [number, number] {
+    const [re, im] = [this.#re[row]![column]!, this.#im[row]![column]!];
+    const [kr, ki] = [this.#re[k]![k]!, this.#im[k]![k]!];
+    const square = kr * kr + ki * ki;
+    return [(re * kr + im * ki) / square, (im * kr - re * ki) / square];
+  }
+
+  #eliminate(k: number, row: number): void {
+    const [fr, fi] = this.#over(k, row, k);
+    if (fr === 0 && fi === 0) return;
+    const [kr, ki, rr, ri] = [this.#re[k]!, this.#im[k]!, this.#re[row]!, this.#im[row]!];
+    for (let c = k; c <= this.#n; c++) {
+      rr[c]! -= fr * kr[c]! - fi * ki[c]!;
+      ri[c]! -= fr * ki[c]! + fi * kr[c]!;
+    }
   }
 }

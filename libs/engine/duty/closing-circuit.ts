@@ -1,5 +1,6 @@
 import { type ComplexNumber, cAbs, cAdd, cDivide, cMultiply, cSubtract } from '../quantity/complex-number.js';
-import { type ClosingCircuit, LoopImpedance } from './loop-impedance.js';
+import { type ClosingCircuit, LoopImpedance, mergedBranches } from './loop-impedance.js';
+import { NetworkLoop } from './network-loop.js';
 
 /** The greatest current of the closing branch over every closing instant. */
 export interface ClosingPeak {
@@ -30,7 +31,7 @@ const MOST_PERIODS = 10;
  * @source method-inrush
  */
 export function closingPeak(circuit: ClosingCircuit, floorA = 0): ClosingPeak {
-  const loop = new LoopImpedance(circuit);
+  const loop = loopOf(circuit);
   const omega = 2 * Math.PI * circuit.frequencyHz;
   const atOmega: ComplexNumber = { re: 0, im: omega };
   const busV = loop.busVoltage(atOmega, circuit.crestV);
@@ -43,6 +44,13 @@ export function closingPeak(circuit: ClosingCircuit, floorA = 0): ClosingPeak {
   const found = greatest(terms, MOST_PERIODS / circuit.frequencyHz);
   const z = sumAt(terms, found.afterS);
   return { ...found, phaseRad: -Math.atan2(z.im, z.re) };
+}
+
+function loopOf(circuit: ClosingCircuit): LoopImpedance | NetworkLoop {
+  const { network, connected, closing } = circuit;
+  return network === undefined
+    ? new LoopImpedance(circuit)
+    : new NetworkLoop(network, mergedBranches(connected), closing);
 }
 
 /** The peak before its phase is known. */

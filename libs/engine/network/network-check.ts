@@ -1,4 +1,4 @@
-import { type SupplyPath, shortCircuitMva } from '../supply/supply-path.js';
+import { pathImpedanceInto, type SeriesOhm, type SupplyPath, shortCircuitMva } from '../supply/supply-path.js';
 import type { Flow } from './bus-flow.js';
 import type { Corner } from './corners.js';
 import type { BankModel } from './flow.js';
@@ -7,6 +7,7 @@ import { networkStates } from './network-states.js';
 import { nodalCase } from './nodal-case.js';
 import { nodalTable } from './nodal-impedance.js';
 import type { PeakFinder } from './peaks.js';
+import type { NetworkState } from './topology.js';
 
 /** Voltage and currents at one order. */
 export interface OrderResult {
@@ -227,23 +228,35 @@ function nodalShortCircuit(
 }
 
 /**
- * Impedance of the supply at its strongest, seen from the bank's bus at the fundamental.
- * @param model the network without the bank, with several buses
- * @param out receives [Re, Im] of the standing with the least |Z| [Ω]
+ * Impedance of the supply at its strongest, seen from the bank's bus at the fundamental, loads and capacitors left out.
+ * @param model the network without the bank
+ * @param states standings to choose from; all of them where absent
+ * @returns R and X per phase of the one with the least |Z| [Ω]
  * @source method-network
  */
-export function strongestInto(model: NetworkModel, out: Float64Array): void {
-  const found = bareImpedances(model, model.corners.networks[1]!.path);
+export function strongestOhm(model: NetworkModel, states?: readonly NetworkState[]): SeriesOhm {
+  const { path } = model.corners.networks[1]!;
+  if (model.nodal === null) {
+    const z = new Float64Array(2);
+    pathImpedanceInto(path, 1, z);
+    return { rOhm: z[0]!, xOhm: z[1]! };
+  }
+  const found = bareImpedances(model, path, states);
   const size = ([re, im]: [number, number]): number => re * re + im * im;
-  out.set(found.reduce((least, z) => (size(z) < size(least) ? z : least)));
+  const [rOhm, xOhm] = found.reduce((least, z) => (size(z) < size(least) ? z : least));
+  return { rOhm, xOhm };
 }
 
 // Source, transformers, cables and running generators alone, in every standing.
-function bareImpedances(model: NetworkModel, path: SupplyPath): [number, number][] {
+function bareImpedances(
+  model: NetworkModel,
+  path: SupplyPath,
+  states: readonly NetworkState[] = networkStates(model.nodal!.topology),
+): [number, number][] {
   const { topology } = model.nodal!;
   const none = topology.motorKw.map(() => 0);
   const bare = { ...topology, motorKw: none, resistiveKw: none };
-  return networkStates(topology).map((state) => {
+  return states.map((state) => {
     const withoutCapacitors = { ...state, capacitorsIn: state.capacitorsIn.map(() => 0) };
     const nodal = nodalCase(bare, withoutCapacitors, path, { ...model.damping, dampingKw: 0, listedShare: 0 });
     const { z, nodes } = nodalTable(nodal, Float64Array.of(1));

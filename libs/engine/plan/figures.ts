@@ -1,5 +1,5 @@
 import type { Bank } from '../layout/bank.js';
-import { strongestInto } from '../network/network-check.js';
+import { strongestOhm } from '../network/network-check.js';
 import { neutralA } from '../network/summation.js';
 import { supplyPath } from '../supply/supply-path.js';
 import { bankFigures } from './bank-figures.js';
@@ -136,16 +136,15 @@ function supplyFigures(study: Study, result: Result): Figure[] {
 
 // In a network of several buses the strongest standing's own impedance; the path alone would give another number.
 function nodalFigure(study: Study, result: Result): Figure {
-  const z = new Float64Array(2);
-  strongestInto(study.model, z);
+  const { rOhm, xOhm } = strongestOhm(study.model);
   return figure(
     'network.shortCircuitMva',
     { value: result.network.shortCircuitMva, unit: 'MVA' },
     { formula: 'U^2 / √(R^2 + X^2) / 1000', source: 'method, network, the strongest standing' },
     [
       ['U', study.site.nominalV, 'V'],
-      ['R', 1000 * z[0]!, 'mΩ'],
-      ['X', 1000 * z[1]!, 'mΩ'],
+      ['R', 1000 * rOhm, 'mΩ'],
+      ['X', 1000 * xOhm, 'mΩ'],
     ],
   );
 }
