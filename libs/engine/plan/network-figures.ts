@@ -1,4 +1,4 @@
-import { strongestInto } from '../network/network-check.js';
+import { strongestOhm } from '../network/network-check.js';
 import { neutralA } from '../network/summation.js';
 import { supplyPath } from '../supply/supply-path.js';
 import { type Figure, figure } from './figure.js';
@@ -61,16 +61,15 @@ export function supplyFigures(judged: Judged, result: BankResult): Figure[] {
 
 // In a network of several buses the strongest standing's own impedance; the path alone would give another number.
 function nodalFigure(judged: Judged, result: BankResult): Figure {
-  const z = new Float64Array(2);
-  strongestInto(judged.model, z);
+  const { rOhm, xOhm } = strongestOhm(judged.model);
   return figure(
     'network.shortCircuitMva',
     { value: result.network.shortCircuitMva, unit: 'MVA' },
     { formula: 'U^2 / √(R^2 + X^2) / 1000', source: 'method, network, the strongest standing' },
     [
       ['U', judged.site.nominalV, 'V'],
-      ['R', 1000 * z[0]!, 'mΩ'],
-      ['X', 1000 * z[1]!, 'mΩ'],
+      ['R', 1000 * rOhm, 'mΩ'],
+      ['X', 1000 * xOhm, 'mΩ'],
     ],
   );
 }
