@@ -1,10 +1,18 @@
-import { type Outcome, type RecordSummary, type ScannedLevel, UTC_TABLE, type ZoneTable } from '#libs/engine/index.js';
+import {
+  isRecordSign,
+  type Outcome,
+  type RecordSummary,
+  type ScannedLevel,
+  UTC_TABLE,
+  type ZoneTable,
+} from '#libs/engine/index.js';
 import { deviceTable, openDevices } from './device-words.js';
 import { dutyName } from './figure-words.js';
 import { formatApart, formatNumber, formatQuantity, GAP } from './format-number.js';
 import { formatLength, formatMoment } from './local-stamp.js';
 import { plainName } from './plain-name.js';
 import { proposedWords } from './proposed-words.js';
+import { gradeWords, MONTH_HEADS, monthCells, type QualityStated, qualityRows } from './quality-words.js';
 import { remarkConsequence, remarkSentence } from './remark-words.js';
 import { countDuties, NO_PERMISSION, verdictWords } from './verdict-words.js';
 
@@ -54,6 +62,7 @@ export function resultReport(outcome: Outcome): string {
     ...dutyLines(outcome),
     ...deviceLines(outcome),
     ...reasonLines(outcome),
+    ...questionLines(result.record),
   ];
   return finished(lines);
 }
@@ -61,12 +70,34 @@ export function resultReport(outcome: Outcome): string {
 /**
  * What a meter file holds, for a terminal.
  * @param summary of the record
+ * @param quality of the file
  * @param zone the clock of its stamps; UTC where none is known
  * @returns lines of plain text, ending in a line end
  */
-export function recordReport(summary: RecordSummary, zone: ZoneTable = UTC_TABLE): string {
-  const notes = summary.notes.flatMap((note) => wrapped(`note: ${remarkSentence(note)}`, '  '));
-  return finished([...recordLines(summary, zone), ...notes]);
+export function recordReport(summary: RecordSummary, quality: QualityStated, zone: ZoneTable = UTC_TABLE): string {
+  const notes = summary.notes.filter((note) => !isRecordSign(note));
+  return finished([
+    ...recordLines(summary, zone),
+    '',
+    ...qualityRows(quality, zone).flatMap(([label, text]) => wrapped(row(label, text), ' '.repeat(LABEL_WIDTH))),
+    '',
+    ...tableLines([...MONTH_HEADS], quality.months.map(monthCells)),
+    '',
+    ...questionLines(summary),
+    ...notes.flatMap((note) => wrapped(`note: ${remarkSentence(note)}`, '  ')),
+  ]);
+}
+
+/** What the record's values ask of a person. */
+function questionLines({ notes }: RecordSummary): string[] {
+  return notes
+    .filter(isRecordSign)
+    .flatMap((note) => wrapped(`? ${remarkSentence(note)} ${remarkConsequence(note)}`, '  '));
+}
+
+function tableLines(head: readonly string[], rows: readonly string[][]): string[] {
+  const widths = head.map((text, at) => Math.max(text.length, ...rows.map((cells) => cells[at]!.length)));
+  return [head, ...rows].map((cells) => cells.map((cell, at) => cell.padStart(widths[at]!)).join('  '));
 }
 
 /**
@@ -99,12 +130,9 @@ export function scanReport(levels: readonly ScannedLevel[]): string {
     formatQuantity(peakOhm, 'Ω'),
     ...(severalStandings ? [plainName(corner.standing ?? 'normal')] : []),
   ]);
-  const widths = head.map((text, at) => Math.max(text.length, ...rows.map((cells) => cells[at]!.length)));
-  const line = (cells: readonly string[]) => cells.map((cell, at) => cell.padStart(widths[at]!)).join('  ');
   return finished([
     `Impedance at ${severalBuses ? 'each bus' : 'the bus'} with ${formatQuantity(first.levelKvar, 'kvar')} connected; the first row is the nominal case.`,
-    line(head),
-    ...rows.map(line),
+    ...tableLines(head, rows),
   ]);
 }
 
@@ -131,6 +159,10 @@ function recordLines(record: RecordSummary, zone: ZoneTable): string[] {
       `${formatQuantity(record.powerFactorLagging, '')} lagging only, ${formatQuantity(record.powerFactorNet, '')} net`,
     ),
     row('greatest demand', `${formatQuantity(record.maxKw, 'kW')}, ${formatQuantity(record.maxKva, 'kVA')}`),
+    ...wrapped(
+      row('the record is', `${gradeWords(record.grade)}. ${remarkSentence(record.gradeRule)}`),
+      ' '.repeat(LABEL_WIDTH),
+    ),
   ];
 }
 

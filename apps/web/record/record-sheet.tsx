@@ -69,7 +69,9 @@ export function RecordSheet() {
           </p>
         </section>
       </div>
-      {record === undefined ? null : <ReadingFindings record={record} />}
+      {record === undefined ? null : (
+        <ReadingFindings record={record} timeZone={String(valueAt(state.document, 'timeZone'))} />
+      )}
       {record === undefined ? null : <RecordRevisions record={record} records={state.records} />}
     </>
   );

@@ -84,7 +84,10 @@ export function outcomeOf(kind: Outcome['kind'], study: Study, choice: Choice): 
     robustness: null,
     reactorTrials: [],
     money: choice.money?.(operated) ?? null,
-    verdict: graver(graver(overallVerdict(study, judgement), said.atBest ?? 'clear'), verdictBeside(beside)),
+    verdict: [said.atBest ?? 'clear', supported(study), verdictBeside(beside)].reduce(
+      graver,
+      overallVerdict(study, judgement),
+    ),
     reasons: [
       ...said.reasons,
       ...reasons(study, bank, operated, judgement),
@@ -115,6 +118,11 @@ export function outcomeOf(kind: Outcome['kind'], study: Study, choice: Choice): 
     margins: marginMap(study.model, bank, levels, basisOf(study, control)),
     rival: rivalOf(study, choice, result.verdict),
   };
+}
+
+// Limits may be kept on a week of readings; a bank for the year cannot be recommended on it.
+function supported({ recordSummary }: Study): Verdict {
+  return recordSummary.grade === 'insufficient' ? 'watch' : 'clear';
 }
 
 // A plan does without what the site's own bank has: it says nothing of the one that is proposed.

@@ -6,6 +6,7 @@ import type { Bank } from '../layout/bank.js';
 import { effectiveKvar } from '../layout/stage.js';
 import { meetsTarget } from '../operation/operation.js';
 import { type Remark, remark } from '../problem.js';
+import { checkAgainstSupply } from '../supply/check-against-supply.js';
 import { overwhelmingKva } from './judge-basis.js';
 import type { Operated, Study } from './study.js';
 
@@ -79,6 +80,11 @@ function networkReasons(study: Study, bank: Bank, judgement: Judgement): Remark[
 
 function recordReasons(study: Study): Remark[] {
   const found: Remark[] = [];
+  const { recordSummary } = study;
+  if (recordSummary.grade === 'insufficient') {
+    found.push(remark('record.insufficient', recordSummary.gradeRule.values));
+  }
+  found.push(...checkAgainstSupply(recordSummary, study.site));
   const days = (study.record.endS - study.record.firstS) / 86_400;
   if (study.site.recordedBank.state === 'unknown') {
     found.push(remark('recordedBank.unknown', {}, { path: 'recordedBank.state' }));
