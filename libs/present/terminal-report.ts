@@ -5,7 +5,6 @@ import {
   isRecordSign,
   type Outcome,
   type RecordSummary,
-  type ScannedLevel,
   UTC_TABLE,
   type ZoneTable,
 } from '#libs/engine/index.js';
@@ -17,6 +16,7 @@ import { plainName } from './plain-name.js';
 import { estimateWords, proposedWords } from './proposed-words.js';
 import { gradeWords, MONTH_HEADS, monthCells, type QualityStated, qualityRows } from './quality-words.js';
 import { remarkConsequence, remarkSentence } from './remark-words.js';
+import { finished, tableLines } from './terminal-lines.js';
 import { countDuties, NO_PERMISSION, verdictWords } from './verdict-words.js';
 
 const LABEL_WIDTH = 26;
@@ -161,47 +161,6 @@ function questionLines({ notes }: RecordSummary): string[] {
     .flatMap((note) => wrapped(`? ${remarkSentence(note)} ${remarkConsequence(note)}`, '  '));
 }
 
-function tableLines(head: readonly string[], rows: readonly string[][]): string[] {
-  const widths = head.map((text, at) => Math.max(text.length, ...rows.map((cells) => cells[at]!.length)));
-  return [head, ...rows].map((cells) => cells.map((cell, at) => cell.padStart(widths[at]!)).join('  '));
-}
-
-/**
- * The scan of one level in every corner, for a terminal.
- * @param levels one entry a corner, nominal first
- * @returns a table of plain text, ending in a line end
- */
-export function scanReport(levels: readonly ScannedLevel[]): string {
-  const first = levels[0];
-  if (first === undefined) return '';
-  const severalBuses = levels.some(({ bus }) => bus !== first.bus);
-  const severalStandings = levels.some(({ corner }) => corner.standing !== undefined);
-  const head = [
-    ...(severalBuses ? ['bus'] : []),
-    'fault level',
-    'capacitance',
-    'inductance',
-    'damping',
-    'peak at order',
-    'peak',
-    ...(severalStandings ? ['standing'] : []),
-  ];
-  const rows = levels.map(({ bus, corner, parallelOrderH, peakOhm }) => [
-    ...(severalBuses ? [plainName(bus)] : []),
-    formatQuantity(corner.faultLevelMva, 'MVA', 'given'),
-    `× ${formatNumber(corner.capacitanceFactor, 'given')}`,
-    `× ${formatNumber(corner.inductanceFactor, 'given')}`,
-    formatQuantity(corner.dampingKw, 'kW'),
-    formatQuantity(parallelOrderH, ''),
-    formatQuantity(peakOhm, 'Ω'),
-    ...(severalStandings ? [plainName(corner.standing ?? 'normal')] : []),
-  ]);
-  return finished([
-    `Impedance at ${severalBuses ? 'each bus' : 'the bus'} with ${formatQuantity(first.levelKvar, 'kvar')} connected; the first row is the nominal case.`,
-    ...tableLines(head, rows),
-  ]);
-}
-
 function networkLines({ network, duties }: BankResult): string[] {
   const count = countDuties(duties);
   return [
@@ -302,8 +261,4 @@ function wrapped(text: string, indent: string): string[] {
     } else line = line === '' ? word : `${line} ${word}`;
   }
   return [...lines, line];
-}
-
-function finished(lines: readonly string[]): string {
-  return `${lines.join('\n').trimEnd()}\n`;
 }

@@ -3,8 +3,8 @@ import { InputProblem } from '#libs/engine/index.js';
 import { columnsNamed } from './column-candidates.js';
 import { type ColumnChoice, columnChoices } from './column-choice.js';
 import type { CsvView } from './csv-view.js';
-import { dayLayout } from './day-layout.js';
-import { type DaySlots, daySlots } from './day-slots.js';
+import { type DayLayout, dayLayout } from './day-layout.js';
+import { daySlots } from './day-slots.js';
 import { type HeaderColumn, readHeaderColumn } from './header-column.js';
 import { headerWindows } from './header-windows.js';
 import { readNumberText } from './number-cell.js';
@@ -32,14 +32,6 @@ export interface CsvLayout {
   side: SideColumns;
   /** columns of the hours of a day in a file of one row a day */
   days: DayLayout | null;
-}
-
-/** Where a file of one row a day has what. */
-export interface DayLayout extends DaySlots {
-  /** columns whose cells say what a row holds, such as its unit; counted from 0 */
-  labels: number[];
-  /** what stands above the header and may say it for the rows below */
-  title: string;
 }
 
 interface Row {

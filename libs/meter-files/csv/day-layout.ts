@@ -1,10 +1,17 @@
 import type { MeterMap } from '#libs/contract/meter-map.js';
 import { columnsNamed } from './column-candidates.js';
-import type { DayLayout } from './csv-layout.js';
-import { daySlots } from './day-slots.js';
+import { type DaySlots, daySlots } from './day-slots.js';
 import { type HeaderColumn, readHeaderColumn } from './header-column.js';
 import { isHeaderRow } from './row-shape.js';
 import { chooseTimeColumns, isSerial, type TimeColumns, timeContent } from './time-columns.js';
+
+/** Where a file of one row a day has what. */
+export interface DayLayout extends DaySlots {
+  /** columns whose cells say what a row holds, such as its unit; counted from 0 */
+  labels: number[];
+  /** what stands above the header and may say it for the rows below */
+  title: string;
+}
 
 /**
  * Whether a file has a row a day, with the hours or quarter hours as its columns, and where it has what.
