@@ -1,12 +1,15 @@
+import { couplesAtPrimary } from '../duty/limits-point.js';
 import type { Bank } from '../layout/bank.js';
 import { type NetworkModel, siteNetwork } from '../network/network-model.js';
+import { networkStates } from '../network/network-states.js';
+import { joinedNodes } from '../network/nodal-case.js';
 import type { Control } from '../operation/control.js';
 import type { ControllerView } from '../operation/controller-view.js';
 import { type MeterAfter, meterAfter } from '../operation/meter-after.js';
 import { type OperationMonth, operationMonths, type Simulated } from '../operation/operation.js';
 import { simulate } from '../operation/simulate.js';
 import { switchedBank } from '../operation/switched-bank.js';
-import { type Remark, remark } from '../problem.js';
+import { InputProblem, type Remark, remark } from '../problem.js';
 import { tanFromPowerFactor } from '../quantity/power-factor.js';
 import type { LoadRecord } from '../record/load-record.js';
 import { type RecordSummary, summarizeRecord } from '../record/record-summary.js';
@@ -36,6 +39,28 @@ export interface Study {
   voltageScale: Float64Array | null;
 }
 
+// One record at the primary of boards of their own does not say how its load divides among them, and the need at one board
+// depends on it: refused rather than taken through all transformers in parallel.
+function meteringOf({ meteredAt, supply, topology }: SettledSite): Metering {
+  if (meteredAt === 'bus') return { at: 'bus' };
+  if (topology !== null) {
+    const node = joinedNodes(topology, networkStates(topology)[0]!);
+    const fed = [...new Set(topology.transformerBus.map((bus) => node[bus]!))];
+    if (fed.length > 1) {
+      const boards = fed.map((each) => `"${topology.buses[node.indexOf(each)]}"`).join(', ');
+      throw new InputProblem([
+        {
+          code: 'inconsistent',
+          path: 'meteredAt',
+          expected: '"bus", with the record of the bank’s own board, where transformers feed boards of their own',
+          found: `"primary", one record for the boards ${boards}`,
+        },
+      ]);
+    }
+  }
+  return { at: 'primary', passage: transformerPassage(supply) };
+}
+
 /**
  * Prepares a site and its record: defaults, load at the bus, need, network without the bank.
  * @param site validated site
@@ -47,9 +72,7 @@ export interface Study {
  */
 export function studySite(site: Site, record: LoadRecord, zone: ZoneTable): Study {
   const { site: settled, assumptions } = settleSite(site, record);
-  const metering: Metering =
-    settled.meteredAt === 'primary' ? { at: 'primary', passage: transformerPassage(settled.supply) } : { at: 'bus' };
-  const load = busLoad(record, metering, oldBank(settled));
+  const load = busLoad(record, meteringOf(settled), oldBank(settled));
   const target: Target = { powerFactor: settled.targetPowerFactor, onExport: settled.onExport };
   const needKvar = needColumn(load, target, record.beginS);
   const months = monthIndex(record.beginS, zone);
@@ -72,6 +95,7 @@ export function studySite(site: Site, record: LoadRecord, zone: ZoneTable): Stud
       nominalV: settled.nominalV,
       loadA,
       topology: settled.topology,
+      primary: couplesAtPrimary(settled),
     }),
     voltageScale: record.voltageV?.map((u) => (u / settled.nominalV) ** 2) ?? null,
   };
