@@ -16,15 +16,17 @@ export class MeterBytes {
   /** share of the work that reading the bytes is; less than 1 where most of it comes after the last byte */
   readonly #share: { of: number };
   readonly #chunks: AsyncGenerator<Uint8Array>;
+  readonly #raw: AsyncGenerator<Uint8Array>;
 
   private constructor(
     head: Uint8Array,
     encoding: Encoding,
-    source: { chunks: AsyncGenerator<Uint8Array>; share: { of: number } },
+    source: { chunks: AsyncGenerator<Uint8Array>; raw: AsyncGenerator<Uint8Array>; share: { of: number } },
   ) {
     this.head = head.subarray(0, HEAD_BYTES);
     this.encoding = encoding;
     this.#chunks = source.chunks;
+    this.#raw = source.raw;
     this.#share = source.share;
   }
 
@@ -44,11 +46,11 @@ export class MeterBytes {
     const encoding = isBinary(start) ? 'utf-8' : encodingOf(start);
     if (encoding === 'utf-8') {
       const head = withoutMark(start);
-      return new MeterBytes(head, encoding, { chunks: again(head, raw), share });
+      return new MeterBytes(head, encoding, { chunks: again(head, raw), raw, share });
     }
     const decoded = decodedChunks(again(start, raw), encoding);
     const head = (await decoded.next()).value ?? new Uint8Array(0);
-    return new MeterBytes(head, encoding, { chunks: again(head, decoded), share });
+    return new MeterBytes(head, encoding, { chunks: again(head, decoded), raw, share });
   }
 
   /**
@@ -71,6 +73,8 @@ export class MeterBytes {
   /** Lets the source close what it holds, where reading ends before its end. */
   async close(): Promise<void> {
     await this.#chunks.return(undefined);
+    // Chunks that were never asked for have not begun, so that their end does not reach the source.
+    await this.#raw.return(undefined);
   }
 }
 

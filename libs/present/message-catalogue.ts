@@ -1,5 +1,6 @@
 import { ASSUMPTION_MESSAGES } from './assumption-messages.js';
 import { CAUTION_MESSAGES } from './caution-messages.js';
+import { ESTIMATE_MESSAGES } from './estimate-messages.js';
 import type { Messages } from './message.js';
 import { MONEY_MESSAGES } from './money-messages.js';
 import { NOTE_MESSAGES } from './note-messages.js';
@@ -14,4 +15,5 @@ export const MESSAGES: Messages = {
   ...NOTE_MESSAGES,
   ...MONEY_MESSAGES,
   ...RECORD_MESSAGES,
+  ...ESTIMATE_MESSAGES,
 };

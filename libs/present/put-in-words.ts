@@ -1,4 +1,4 @@
-import type { RecordSummary, Remark, Result } from '#libs/engine/index.js';
+import type { BankResult, EstimateResult, RecordSummary, Remark, Result } from '#libs/engine/index.js';
 import { figureInWords } from './figure-words.js';
 import { remarkConsequence, remarkInWords } from './remark-words.js';
 
@@ -8,9 +8,22 @@ import { remarkConsequence, remarkInWords } from './remark-words.js';
  * @returns a copy with words; numbers untouched
  */
 export function putInWords(result: Result): Result {
+  return { ...bankInWords(result), record: recordInWords(result.record) };
+}
+
+/**
+ * Fills the words of a result without a record.
+ * @param result from the engine
+ * @returns a copy with words; numbers untouched
+ */
+export function putEstimateInWords(result: EstimateResult): EstimateResult {
+  const { estimate } = result;
+  return { ...bankInWords(result), estimate: { ...estimate, refused: estimate.refused.map(remarkInWords) } };
+}
+
+function bankInWords<T extends BankResult>(result: T): T {
   return {
     ...result,
-    record: recordInWords(result.record),
     reasons: result.reasons.map(remarkInWords),
     assumptions: result.assumptions.map(remarkInWords),
     cautions: result.cautions.map(remarkInWords),

@@ -57,11 +57,11 @@ export const RECORD_MESSAGES: Messages = {
     'Ask whether the stamps follow summer time and are in the zone that was given; months, windows and tariff hours depend on it.',
   ),
   'sign.still': asked(
-    'The {register} give one and the same value for {hours:hour|hours} from {date}, the longest of {runs:such run|such runs}.',
+    'The {register} give one and the same value for {hours:hour|hours} from {date}[, the longest of {runs:such run|such runs}].',
     'Ask whether the register stood still or its owner filled a gap; such values are not measured.',
   ),
   'sign.zeros': asked(
-    'The {register} read exactly 0 for {hours:hour|hours} from {date}, longer than this record’s habit; the longest of {runs:such run|such runs}.',
+    'The {register} read exactly 0 for {hours:hour|hours} from {date}, longer than this record’s habit[; the longest of {runs:such run|such runs}].',
     'Ask whether the site stood still or the meter was off; missing is not zero.',
   ),
   'grade.full': ruled(

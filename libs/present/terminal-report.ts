@@ -1,4 +1,7 @@
 import {
+  type BankOutcome,
+  type BankResult,
+  type EstimateOutcome,
   isRecordSign,
   type Outcome,
   type RecordSummary,
@@ -11,7 +14,7 @@ import { dutyName } from './figure-words.js';
 import { formatApart, formatNumber, formatQuantity, GAP } from './format-number.js';
 import { formatLength, formatMoment } from './local-stamp.js';
 import { plainName } from './plain-name.js';
-import { proposedWords } from './proposed-words.js';
+import { estimateWords, proposedWords } from './proposed-words.js';
 import { gradeWords, MONTH_HEADS, monthCells, type QualityStated, qualityRows } from './quality-words.js';
 import { remarkConsequence, remarkSentence } from './remark-words.js';
 import { countDuties, NO_PERMISSION, verdictWords } from './verdict-words.js';
@@ -26,9 +29,8 @@ const LINE_WIDTH = 96;
  */
 export function resultReport(outcome: Outcome): string {
   const { result, site, zone } = outcome;
-  const { requirement, operation, network } = result;
+  const { requirement, operation } = result;
   const target = formatNumber(requirement.targetPowerFactor, 'given');
-  const count = countDuties(result.duties);
   const factor = (value: number | null) => formatQuantity(value, '');
   const lowest = operation.months.flatMap(({ powerFactorLagging: value }) => (value === null ? [] : [value]));
   const lines = [
@@ -50,14 +52,7 @@ export function resultReport(outcome: Outcome): string {
       `${formatNumber(result.control.setPointPowerFactor, 'given')}, reconnection delay ${formatQuantity(result.control.reconnectDelayS, 's', 'given')}`,
     ),
     row('switchings', formatNumber(operation.totalSwitchings, 'whole')),
-    row(
-      'fault level at the bus',
-      `${formatQuantity(network.shortCircuitMva, 'MVA')}, ${formatQuantity(network.shortCircuitMinMva, 'MVA')} at the least`,
-    ),
-    row(
-      'rows judged',
-      `${count.judged}: ${count.clear} within limits, ${count.watch} near a limit, ${count.avoid} over; ${count.notJudged} not judged`,
-    ),
+    ...networkLines(result),
     '',
     ...dutyLines(outcome),
     ...deviceLines(outcome),
@@ -65,6 +60,77 @@ export function resultReport(outcome: Outcome): string {
     ...questionLines(result.record),
   ];
   return finished(lines);
+}
+
+/**
+ * The answer of `plan` or `assess` without a record, for a terminal.
+ * @param outcome the estimate
+ * @returns lines of plain text, ending in a line end
+ */
+export function estimateReport(outcome: EstimateOutcome): string {
+  const { result, site } = outcome;
+  const { control, estimate } = result;
+  const left = estimate.refused.flatMap((one) => wrapped(`- ${remarkSentence(one)}`, '  '));
+  return finished([
+    plainName(site.name),
+    'ESTIMATE, without a meter’s record',
+    `Proposed, ${estimateWords(outcome)}`,
+    `Verdict: ${verdictWords(result.verdict)}. ${NO_PERMISSION}`,
+    '',
+    ...needLines(outcome),
+    row(
+      'set point',
+      `${formatNumber(control.setPointPowerFactor, 'given')}, reconnection delay ${formatQuantity(control.reconnectDelayS, 's', 'given')}`,
+    ),
+    ...networkLines(result),
+    '',
+    ...dutyLines(outcome),
+    ...deviceLines(outcome),
+    ...reasonLines(outcome),
+    '',
+    'Left out, since an estimate can’t support it:',
+    ...left,
+  ]);
+}
+
+function needLines({ result }: EstimateOutcome): string[] {
+  const { requirement, estimate, money } = result;
+  const { lowerKvar, upperKvar, listKvar } = requirement;
+  const factors = requirement.months.map((month) => month.powerFactorLagging);
+  const target = formatNumber(requirement.targetPowerFactor, 'given');
+  const bounds = lowerKvar === null || upperKvar === null;
+  return [
+    row('estimated from', estimate.basis),
+    ...(bounds
+      ? []
+      : [
+          row(
+            'bills',
+            `${formatNumber(factors.length, 'whole')}, lowest month ${formatQuantity(lowestOf(factors), '')}`,
+          ),
+          row(
+            `needed for ${target}`,
+            `between ${formatQuantity(lowerKvar, 'kvar')} and ${formatQuantity(upperKvar, 'kvar')} (bounds, estimated)`,
+          ),
+        ]),
+    ...(listKvar === null || estimate.equipment === null
+      ? []
+      : [
+          row(
+            'equipment list',
+            `${formatQuantity(estimate.equipment.activeKw, 'kW')}, ${formatQuantity(estimate.equipment.reactiveKvar, 'kvar')}, ` +
+              `power factor ${formatQuantity(estimate.equipment.powerFactor, '')}; needs ${formatQuantity(listKvar, 'kvar')} for ${target} (estimated)`,
+          ),
+        ]),
+    ...(money === null
+      ? []
+      : [
+          row(
+            'bills by the tariff',
+            `${formatNumber(money.bills.before.total)} before, ${formatNumber(money.bills.after.total)} after (estimated)`,
+          ),
+        ]),
+  ];
 }
 
 /**
@@ -136,6 +202,20 @@ export function scanReport(levels: readonly ScannedLevel[]): string {
   ]);
 }
 
+function networkLines({ network, duties }: BankResult): string[] {
+  const count = countDuties(duties);
+  return [
+    row(
+      'fault level at the bus',
+      `${formatQuantity(network.shortCircuitMva, 'MVA')}, ${formatQuantity(network.shortCircuitMinMva, 'MVA')} at the least`,
+    ),
+    row(
+      'rows judged',
+      `${count.judged}: ${count.clear} within limits, ${count.watch} near a limit, ${count.avoid} over; ${count.notJudged} not judged`,
+    ),
+  ];
+}
+
 function recordLines(record: RecordSummary, zone: ZoneTable): string[] {
   const left = [
     `${formatNumber(record.missing, 'whole')} missing`,
@@ -166,7 +246,7 @@ function recordLines(record: RecordSummary, zone: ZoneTable): string[] {
   ];
 }
 
-function dutyLines({ result }: Outcome): string[] {
+function dutyLines({ result }: BankOutcome): string[] {
   if (result.duties.length === 0) return [];
   const rows = result.duties.map((duty) => {
     const apart = duty.limit === null ? null : formatApart(duty.value, duty.limit);
@@ -183,7 +263,7 @@ function dutyLines({ result }: Outcome): string[] {
 }
 
 /** Devices that were entered or fall short; what is open is counted. */
-function deviceLines(outcome: Outcome): string[] {
+function deviceLines(outcome: BankOutcome): string[] {
   const { devices } = outcome.result;
   if (devices.length === 0) return [];
   const short = deviceTable(outcome).filter((_, at) => devices[at]!.state === 'short');
@@ -196,7 +276,7 @@ function deviceLines(outcome: Outcome): string[] {
   ];
 }
 
-function reasonLines({ result }: Outcome): string[] {
+function reasonLines({ result }: BankOutcome): string[] {
   return result.reasons.flatMap((reason) => {
     const consequence = remarkConsequence(reason);
     return wrapped(`- ${remarkSentence(reason)}${consequence === '' ? '' : ` ${consequence}`}`, '  ');

@@ -134,7 +134,7 @@ describe(`signs in a record, seeds from ${SEED}`, () => {
   it('find a register that stands still for two days, and the meter that reads 0 for nine hours', () => {
     const held = withChange(plant(SEED), (copy, i) => (copy.laggingKvar[i] = 41.3), { fromDay: 80, toDay: 82 });
     expect(questions(held)).toMatchObject([
-      { code: 'sign.still', values: { register: 'kvar', runs: 1, date: '2025-03-22', hours: 48 } },
+      { code: 'sign.still', values: { register: 'kvar', date: '2025-03-22', hours: 48 } },
     ]);
     const off = withChange(
       plant(SEED),
@@ -145,7 +145,7 @@ describe(`signs in a record, seeds from ${SEED}`, () => {
       { fromDay: 80.25, toDay: 80.625 },
     );
     expect(recordSigns(off, PLANT_ZONE)).toMatchObject({
-      questions: [{ code: 'sign.zeros', values: { register: 'kW and kvar', runs: 1, date: '2025-03-22', hours: 9 } }],
+      questions: [{ code: 'sign.zeros', values: { register: 'kW and kvar', date: '2025-03-22', hours: 9 } }],
       suspectZeros: [{ at: 'kW and kvar', intervals: 36, beginS: PLANT_FIRST_S + 80.25 * 86_400 }],
     });
   });

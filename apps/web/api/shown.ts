@@ -1,6 +1,6 @@
 import type { ProblemJson } from '#libs/contract/error-body.js';
 import type { MeterMap } from '#libs/contract/meter-map.js';
-import type { RecordSummary, Remark, Result, Verdict } from '#libs/engine/index.js';
+import type { EstimateResult, RecordSummary, Remark, Result, Verdict } from '#libs/engine/index.js';
 import type { QualityStated } from '#libs/present/quality-words.js';
 
 /** A site file as JSON: what was typed into it, units and all. */
@@ -49,17 +49,18 @@ export interface RevisionHeadShown {
   author: string | null;
   reason: string | null;
   proposed: string;
-  recordId: string;
+  /** null where the site's own estimate stood in for a record */
+  recordId: string | null;
   engineVersion: string;
   contentHash: string;
-  links: { self: string; proposal: string; record: string };
+  links: { self: string; proposal: string; record: string | null };
 }
 
 /** A revision in full. */
 export interface RevisionShown extends RevisionHeadShown {
   rival: { name: string; verdict: Verdict; levelsOver: number; levelsAll: number } | null;
   inputs: { site: SiteDocument };
-  result: Result;
+  result: Result | EstimateResult;
 }
 
 /** A job as the API gives it. */

@@ -18,13 +18,10 @@ import type { Figure } from './figure.js';
 import type { ReactorTrial } from './reactor-choice.js';
 import type { Robustness } from './robustness.js';
 
-/** The answer of `plan` and `assess`. */
-export interface Result {
-  record: RecordSummary;
-  requirement: RequirementSummary;
+/** What is said of a bank on its network, whatever the load is known from. */
+export interface BankResult {
   bank: BankSummary;
   control: Control;
-  operation: OperationSummary;
   network: NetworkSummary;
   /** the edition judged by, and the point it was judged at */
   limits: LimitsPoint;
@@ -42,11 +39,18 @@ export interface Result {
   robustness: Robustness | null;
   /** the bank's stages with the customary reactor ratios; empty where its groups differ in theirs, and until asked for */
   reactorTrials: ReactorTrial[];
-  /** null without a tariff */
-  money: Money | null;
   verdict: Verdict;
   reasons: Remark[];
   assumptions: Remark[];
   cautions: Remark[];
   figures: Figure[];
+}
+
+/** The answer of `plan` and `assess` from a meter's record. */
+export interface Result extends BankResult {
+  record: RecordSummary;
+  requirement: RequirementSummary;
+  operation: OperationSummary;
+  /** null without a tariff */
+  money: Money | null;
 }

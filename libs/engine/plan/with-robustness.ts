@@ -3,7 +3,7 @@ import { siteNetwork } from '../network/network-model.js';
 import { Stopped, type Watch } from '../problem.js';
 import { withEffects } from './effects.js';
 import type { Judged } from './judge-basis.js';
-import type { Outcome } from './outcome.js';
+import type { BankOutcome } from './outcome.js';
 import { reactorTrials } from './reactor-choice.js';
 import { robustness } from './robustness.js';
 
@@ -11,13 +11,13 @@ import { robustness } from './robustness.js';
  * The same outcome with what says how firm it is: ranges in which the verdict stands, one stage out, the effect of each
  * assumption, and the customary reactor ratios side by side. Some sixty judgements: apart, so that a bank under the
  * hand needn't wait for them.
- * @param outcome of planBank or assessBank
+ * @param outcome a bank planned or judged
  * @param watch progress and stopping
  * @returns a new outcome; its bank, verdict and figures are unchanged
  * @throws Stopped where the watch says so
  * @source method-robustness
  */
-export function withRobustness(outcome: Outcome, watch?: Watch): Outcome {
+export function withRobustness<T extends BankOutcome>(outcome: T, watch?: Watch): T {
   const { site, bank, result } = outcome;
   if (bank.groups.length === 0) return outcome;
   const { supply, loads, nominalV, topology } = site;

@@ -65,21 +65,21 @@ export function isRecordSign({ code }: Remark): boolean {
 
 function stillSigns(runs: readonly StillRun[], register: string, zone: ZoneTable): Remark[] {
   if (runs.length === 0) return [];
-  const { date, hours } = longest(runs, zone);
-  return [remark('sign.still', { register, runs: runs.length, date, hours })];
+  return [remark('sign.still', { register, ...longest(runs, zone) })];
 }
 
 function zeroSigns(runs: readonly SuspectZeros[], zone: ZoneTable): Remark[] {
   return (['kW and kvar', 'kW', 'kvar'] as const).flatMap((register) => {
     const found = runs.filter(({ at }) => at === register);
     if (found.length === 0) return [];
-    const { date, hours } = longest(found, zone);
-    return [remark('sign.zeros', { register, runs: found.length, date, hours })];
+    return [remark('sign.zeros', { register, ...longest(found, zone) })];
   });
 }
 
-function longest(runs: readonly StillRun[], zone: ZoneTable): { date: string; hours: number } {
+/** Where the longest run begins, how long it is, and of how many, where it is not the only one. */
+function longest(runs: readonly StillRun[], zone: ZoneTable): Record<string, number | string> {
   const run = runs.reduce((most, other) => (other.intervals > most.intervals ? other : most));
   const localS = run.beginS + offsetAtS(zone, run.beginS);
-  return { date: localDay(Math.floor(localS / 86_400)), hours: (run.endS - run.beginS) / HOUR_S };
+  const values = { date: localDay(Math.floor(localS / 86_400)), hours: (run.endS - run.beginS) / HOUR_S };
+  return runs.length === 1 ? values : { ...values, runs: runs.length };
 }

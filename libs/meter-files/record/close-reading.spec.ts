@@ -30,7 +30,7 @@ function result() {
 describe('closing a reading', () => {
   it('puts what the values ask among the notes, where a plan lists its open points', () => {
     const { record, quality } = closeReading(result(), {});
-    const values = { register: 'kW and kvar', runs: 1, date: '2025-03-05', hours: 10 };
+    const values = { register: 'kW and kvar', date: '2025-03-05', hours: 10 };
     expect(quality.questions).toMatchObject([{ code: 'sign.zeros', values }]);
     expect(record.notes).toEqual(quality.questions);
     expect(quality).toMatchObject({
