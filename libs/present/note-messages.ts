@@ -94,13 +94,13 @@ export const NOTE_MESSAGES: Messages = {
     'See that the sign is so.',
   ),
   'reactive-never-leading': noted(
-    'The reactive column is nowhere negative; all of it was taken as lagging.',
-    'If the meter writes kvar without their sign, over-correction in the record would not show.',
+    'The reactive column is nowhere negative; all of it was taken as lagging. If it has no sign, over-correction cannot show.',
+    'Ask whether the meter writes the sign of kvar.',
     'information',
   ),
   'reactive-unsigned': noted(
-    'The file gives kvar only as a size without a sign; all of it was taken as lagging.',
-    'Over-correction in the record would not show.',
+    'The file gives kvar only as a size without a sign; all of it was taken as lagging, and over-correction cannot show.',
+    'Ask for kvar with their sign, or lagging and leading apart.',
   ),
   'powers-worked-out': noted(
     'Active or reactive power was worked out from {columns}.',
