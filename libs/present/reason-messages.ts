@@ -174,12 +174,6 @@ export const REASON_MESSAGES: Messages = {
     text: 'Photovoltaic plant of {photovoltaicKw} takes active power off the meter and leaves the kvar: the power factor falls by day.',
     consequence: 'Ask what kvar its inverters give, and how the target holds while the site exports.',
   },
-  'limits.notCouplingPoint': {
-    level: 'to be noted',
-    text: 'The limits of {edition} are held against the voltage at {point}; the point of coupling lies at the {couplingPoint}.',
-    consequence:
-      'Ask the network operator for the limits there; this site’s own share of the distortion is less there.',
-  },
   'layout.noCandidate': {
     level: 'blocks issue',
     text: 'The catalogue holds no bank that could be built for this site.',

@@ -55,12 +55,12 @@ function drawLoads(paper: Paper, { site }: BankOutcome): void {
 
 /** Where the limits of distortion were held against the voltage. */
 function pointWords({ result }: BankOutcome): string {
-  const { voltage, points, couplingPoint, atCouplingPoint } = result.limits;
-  const at = points.map(plainName).join(', ');
-  const judged = `${voltage} is held against the voltage at ${points.length === 1 ? 'bus' : 'the buses'} ${at}`;
-  if (atCouplingPoint) return `${judged}; the point of coupling is ${plainName(couplingPoint)}.`;
-  const where = couplingPoint === 'primary' ? 'the transformer’s primary' : plainName(couplingPoint);
-  return `${judged}, which is not the point of coupling: that lies at ${where}.`;
+  const { voltage, points, couplingPoint } = result.limits;
+  const buses = points.filter((point) => point !== 'primary');
+  const at = `${buses.length === 1 ? 'bus' : 'the buses'} ${buses.map(plainName).join(', ')}`;
+  const judged = `${voltage} is held against the voltage at ${at}`;
+  if (couplingPoint !== 'primary') return `${judged}; the point of coupling is ${plainName(couplingPoint)}.`;
+  return `${judged} and at the transformer’s primary, which is the point of coupling.`;
 }
 
 /** Every value that was taken because none was given, and what settles it. */

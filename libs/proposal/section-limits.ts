@@ -38,7 +38,7 @@ function validityRows(outcome: Outcome | EstimateOutcome): string[][] {
   const { site, bank, result } = outcome;
   const states = site.topology === null ? [null] : networkStates(site.topology);
   const { corners } = cornerSet(site.supply, site.loads, site.nominalV, states);
-  const buses = result.limits.points.length;
+  const buses = result.limits.points.filter((point) => point !== 'primary').length;
   const { faultLevelMva } = site.supply;
   const present = (result.network.levels[0]?.orders ?? []).map(({ orderH }) => formatNumber(orderH, 'given'));
   const rows = [

@@ -61,16 +61,15 @@ describe('a site of several buses', () => {
   const plain = assessed();
 
   it('is judged at every bus, and says which', () => {
-    expect(plain.limits).toMatchObject({ points: ['A', 'B', 'C'], couplingPoint: 'B', atCouplingPoint: true });
+    expect(plain.limits).toMatchObject({ points: ['A', 'B', 'C'], couplingPoint: 'B' });
     const row = plain.duties.find(({ name }) => name === 'voltage distortion')!;
     expect(row.bus).toBe('C'); // the loads stand at the end of the cable
     expect(new Set(plain.network.levels.map(({ bus }) => bus))).toEqual(new Set(['A', 'B', 'C']));
   });
 
-  it('says it where its point of coupling is none of them', () => {
+  it('is judged at the transformers’ primary too where its point of coupling is there', () => {
     const result = assessed({ couplingPoint: 'primary' });
-    expect(result.limits.atCouplingPoint).toBe(false);
-    expect(result.reasons.map(({ code }) => code)).toContain('limits.notCouplingPoint');
+    expect(result.limits).toMatchObject({ points: ['A', 'B', 'C', 'primary'], couplingPoint: 'primary' });
   });
 
   it('has more fault current with the coupler closed or a generator running, never less', () => {

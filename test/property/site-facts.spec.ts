@@ -142,7 +142,7 @@ describe('limits by edition', () => {
     expect(result.limits).toMatchObject({
       voltage: 'EN 50160:2010 and agreement',
       points: ['main'],
-      atCouplingPoint: true,
+      couplingPoint: 'main',
     });
     const row = result.duties.find(({ name }) => name === 'voltage distortion')!;
     expect([row.limit, row.source]).toEqual([1, 'EN 50160:2010 and agreement']);
@@ -156,11 +156,10 @@ describe('limits by edition', () => {
     expect(rows['harmonic voltage']).toMatchObject({ orderH: 7, limit: 5 });
   });
 
-  it('say it where the point judged is not the point of coupling', () => {
+  it('are held against the transformer’s primary too where the meter stands there', () => {
     const result = assessedSite({ meteredAt: 'primary' });
-    expect(result.limits).toMatchObject({ couplingPoint: 'primary', atCouplingPoint: false });
-    expect(reasonCodes(result)).toContain('limits.notCouplingPoint');
-    expect(reasonCodes(plain)).not.toContain('limits.notCouplingPoint');
+    expect(result.limits).toMatchObject({ couplingPoint: 'primary', points: ['main', 'primary'] });
+    expect(plain.limits).toMatchObject({ couplingPoint: 'main', points: ['main'] });
   });
 
   it('with a current row of the site’s own hold the supply’s current under iec rules too', () => {

@@ -1,5 +1,6 @@
 import { summarizeNetwork } from '../network/network-check.js';
 import type { NetworkModel } from '../network/network-model.js';
+import type { Topology } from '../network/topology.js';
 import type { LimitChoice } from './limit-editions.js';
 import { networkLimits } from './network-duties.js';
 import type { RuleSet } from './rules.js';
@@ -10,12 +11,10 @@ export interface LimitsPoint {
   voltage: string;
   /** edition of the current limits; null where none apply */
   current: string | null;
-  /** buses whose voltage was held against them */
+  /** buses whose voltage was held against them, and "primary" where that is the point of coupling */
   points: string[];
-  /** where the site meets the network: a bus, or "primary" */
+  /** where the site meets the network, one of the points: a bus, or "primary" */
   couplingPoint: string;
-  /** false where the couplingPoint is none of the points judged */
-  atCouplingPoint: boolean;
 }
 
 /** What decides which limits apply, and where. */
@@ -24,14 +23,23 @@ export interface LimitedSite {
   nominalV: number;
   emcClass: 1 | 2 | 3;
   limits: LimitChoice;
-  meteredAt: 'bus' | 'primary';
+}
+
+/**
+ * Is the transformers' primary the point of coupling: the network part says so, else the meter stands there.
+ * @param site where it is metered, and its topology
+ * @returns true where the voltage at the primary is judged too
+ * @source method-limits
+ */
+export function couplesAtPrimary(site: { meteredAt: 'bus' | 'primary'; topology: Topology | null }): boolean {
+  return site.topology === null ? site.meteredAt === 'primary' : site.topology.couplingPoint === 'primary';
 }
 
 /**
  * The edition and the point of a site's limits. In a network every bus is judged; the point of coupling is the one the
- * network part names, else where the site is metered.
+ * network part names, else where the site is metered; a transformers' primary is then judged beside the buses.
  * @param model the network without the bank
- * @param site rules, edition, voltage and where it is metered
+ * @param site rules, edition and voltage
  * @returns editions and points
  * @source method-limits
  */
@@ -39,14 +47,13 @@ export function limitsPoint(model: NetworkModel, site: LimitedSite): LimitsPoint
   const ends = summarizeNetwork(model, []);
   const limits = networkLimits({ ...site, shortCircuitMinMva: ends.shortCircuitMinMva, loadA: model.loadA });
   const topology = model.nodal?.topology;
-  const metered = site.meteredAt === 'primary' ? 'primary' : model.buses[model.bankBus]!;
-  const point = topology?.couplingPoint;
-  const couplingPoint = point === undefined ? metered : point === 'primary' ? point : topology!.buses[point]!;
+  const bus = topology === undefined || topology.couplingPoint === 'primary' ? model.bankBus : topology.couplingPoint;
+  const couplingPoint = model.primary ? 'primary' : model.buses[bus]!;
+  const points = model.primary ? [...model.buses, 'primary'] : model.buses;
   return {
     voltage: limits.voltage.source,
     current: limits.current?.source ?? null,
-    points: model.buses,
+    points,
     couplingPoint,
-    atCouplingPoint: model.buses.includes(couplingPoint),
   };
 }

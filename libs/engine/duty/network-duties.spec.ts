@@ -33,6 +33,7 @@ function flow(level: number, pct: { voltage: number; current?: number }, corner 
     ordersH: Float64Array.of(11),
     voltageV,
     buses: [{ voltageV, voltageDistortionPct: voltage }],
+    primary: null,
     sourceA: Float64Array.of(current),
     bankA: Float64Array.of(0),
     stageA: [],

@@ -1,4 +1,4 @@
-import type { Flow } from '../network/bus-flow.js';
+import type { BusFlow, Flow } from '../network/bus-flow.js';
 import type { NetworkModel } from '../network/network-model.js';
 import { type CurrentLimits, chosenCurrentLimits } from './current-limits.js';
 import { type Duty, DutyRow, NEAR_RATIO, type Place, ratioVerdict } from './duty-row.js';
@@ -9,6 +9,9 @@ import { chosenVoltageLimits, type VoltageLimits } from './voltage-limits.js';
 /** A limit exceeded without the bank already counts against the bank only beyond this share of the limit. */
 const BASELINE_SHARE = 0.01;
 
+/** A primary is taken for medium voltage: no edition is milder there than at low voltage. */
+const MEDIUM_V = 10_000;
+
 /** The same quantities with the bank out, per network. */
 interface Baseline {
   /** per bus */
@@ -16,12 +19,21 @@ interface Baseline {
   currentPct: number;
   /** per bus and order */
   voltagePct: Float64Array[];
+  primary: { distortionPct: number; voltagePct: Float64Array } | null;
   sourcePct: Float64Array;
+}
+
+/** Voltages at one point, beside the same without the bank and their limits. */
+interface MetVoltages extends BusFlow {
+  without: { distortionPct: number; voltagePct: Float64Array };
+  limits: VoltageLimits<number | null>;
 }
 
 /** Limits of the network at the bus. */
 export interface NetworkLimits {
   voltage: VoltageLimits<number | null>;
+  /** at a transformers' primary, whose voltage is not stated: the row from 1 to 69 kV where the edition has one */
+  primary: VoltageLimits<number | null>;
   /** null where the edition has no current limits or no load current is known */
   current: CurrentLimits<number | null> | null;
 }
@@ -44,6 +56,7 @@ export function networkLimits(basis: {
   const choice = basis.limits ?? limitChoice(basis.rules, undefined);
   return {
     voltage: chosenVoltageLimits(basis.nominalV, basis.emcClass, choice),
+    primary: chosenVoltageLimits(Math.max(basis.nominalV, MEDIUM_V), basis.emcClass, choice),
     current: basis.loadA > 0 ? chosenCurrentLimits(shortCircuitA / basis.loadA, choice) : null,
   };
 }
@@ -90,6 +103,10 @@ export class NetworkDuties {
       distortionPct: flow.buses.map((bus) => bus.voltageDistortionPct),
       currentPct: flow.currentDistortionPct,
       voltagePct: flow.buses.map((bus) => bus.voltageV.map((v) => this.#voltagePct(v))),
+      primary: flow.primary && {
+        distortionPct: flow.primary.voltageDistortionPct,
+        voltagePct: flow.primary.voltageV.map((v) => this.#voltagePct(v)),
+      },
       sourcePct: flow.sourceA.map((a) => this.#sourcePct(a)),
     };
   }
@@ -97,7 +114,14 @@ export class NetworkDuties {
   #takeLevel(flow: Flow): void {
     const baseline = this.#baselines[flow.corner.network]!;
     const place: Place = { levelKvar: flow.levelKvar, corner: flow.corner.corner, orderH: null };
-    for (let bus = 0; bus < flow.buses.length; bus++) this.#takeVoltages(flow, bus, baseline, this.#at(place, bus));
+    for (const [bus, found] of flow.buses.entries()) {
+      const without = { distortionPct: baseline.distortionPct[bus]!, voltagePct: baseline.voltagePct[bus]! };
+      this.#takeVoltages(flow, { ...found, without, limits: this.#limits.voltage }, this.#at(place, bus));
+    }
+    if (flow.primary !== null) {
+      const met = { ...flow.primary, without: baseline.primary!, limits: this.#limits.primary };
+      this.#takeVoltages(flow, met, { ...place, bus: 'primary' });
+    }
     this.#takeCurrents(flow, baseline, place);
   }
 
@@ -106,21 +130,22 @@ export class NetworkDuties {
     return this.#model.buses.length === 1 ? place : { ...place, bus: this.#model.buses[bus]! };
   }
 
-  #takeVoltages(flow: Flow, bus: number, baseline: Baseline, place: Place): void {
-    const { voltage } = this.#limits;
-    const { voltageV, voltageDistortionPct } = flow.buses[bus]!;
+  #takeVoltages(
+    { ordersH }: Flow,
+    { voltageV, voltageDistortionPct, without, limits }: MetVoltages,
+    place: Place,
+  ): void {
     this.#takeAgainst(this.#rows.distortion, place, {
       value: voltageDistortionPct,
-      limit: voltage.distortionPct,
-      without: baseline.distortionPct[bus]!,
+      limit: limits.distortionPct,
+      without: without.distortionPct,
     });
-    for (let i = 0; i < flow.ordersH.length; i++) {
-      const orderH = flow.ordersH[i]!;
-      const limit = voltage.orderPct(orderH);
+    for (let i = 0; i < ordersH.length; i++) {
+      const orderH = ordersH[i]!;
+      const limit = limits.orderPct(orderH);
       if (limit === null) continue;
       const value = this.#voltagePct(voltageV[i]!);
-      const without = baseline.voltagePct[bus]![i]!;
-      this.#takeAgainst(this.#rows.voltage, { ...place, orderH }, { value, limit, without });
+      this.#takeAgainst(this.#rows.voltage, { ...place, orderH }, { value, limit, without: without.voltagePct[i]! });
     }
   }
 

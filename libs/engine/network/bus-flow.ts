@@ -23,6 +23,8 @@ export interface Flow {
   voltageV: Float64Array;
   /** every bus, in the order of the network's names */
   buses: BusFlow[];
+  /** the transformers' primary, referred to the bus voltage; null where it is not judged */
+  primary: BusFlow | null;
   /** current in the source path, per phase [A] */
   sourceA: Float64Array;
   /** current of the whole bank, per phase [A] */

@@ -1,9 +1,11 @@
 import type { Bank } from '../layout/bank.js';
 import type { Level } from '../layout/levels.js';
 import { type ComplexColumn, LEAST_SIEMENS } from './bus-admittance.js';
+import { bankColumn } from './bus-columns.js';
 import type { Flow } from './bus-flow.js';
 import type { NetworkModel } from './network-model.js';
 import { nodalFlowInto } from './nodal-flow.js';
+import { primaryVoltagesInto } from './primary-voltage.js';
 import { stageAdmittance, stageBranch } from './stage-admittance.js';
 import { type BankState, bankStates, stageKinds } from './stage-kinds.js';
 import { combine } from './summation.js';
@@ -64,6 +66,7 @@ export function eachFlow(model: NetworkModel, bank: BankModel, visit: (flow: Flo
       voltageV: bus === model.bankBus && model.nodal === null ? voltageV : new Float64Array(n),
       voltageDistortionPct: 0,
     })),
+    primary: model.primary ? { voltageV: new Float64Array(n), voltageDistortionPct: 0 } : null,
     sourceA: new Float64Array(n),
     bankA: new Float64Array(n),
     stageA: bank.bank.groups.map(() => new Float64Array(n)),
@@ -80,10 +83,19 @@ export function eachFlow(model: NetworkModel, bank: BankModel, visit: (flow: Flo
         flow.corner = corner;
         if (model.nodal === null) flowInto(model, bank.stages[corner.factors]!, flow);
         else nodalFlowInto(model, bank.stages[corner.factors]!, flow);
+        if (flow.primary !== null) finishPrimary(model, bank.stages[corner.factors]!, flow);
         visit(flow);
       }
     }
   }
+}
+
+function finishPrimary(model: NetworkModel, stages: readonly ComplexColumn[], flow: Flow): void {
+  const { re, im } = bankColumn(stages, flow.vector, flow.ordersH.length);
+  if (model.nodal === null) primaryVoltagesInto(model, flow, re, im);
+  const primary = flow.primary!;
+  const square = primary.voltageV.reduce((sum, v) => sum + v * v, 0);
+  primary.voltageDistortionPct = (100 * Math.sqrt(square)) / (model.nominalV / Math.sqrt(3));
 }
 
 function flowInto(model: NetworkModel, stages: readonly ComplexColumn[], flow: Flow): void {

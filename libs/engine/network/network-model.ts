@@ -51,6 +51,8 @@ export interface NetworkModel {
   buses: string[];
   /** index of the bank's bus */
   bankBus: number;
+  /** the transformers' primary is the point of coupling, and judged too */
+  primary: boolean;
 }
 
 /**
@@ -70,14 +72,15 @@ export function networkModel(supply: Supply, loads: Loads, nominalV: number, loa
  * The network of a site without its bank.
  * @param supply settled supply
  * @param loads settled loads
- * @param site bus voltage [V], I_L [A], and the topology, null where there is one bus
+ * @param site bus voltage [V], I_L [A], the topology, null where there is one bus, and whether the transformers' primary is
+ *   judged too
  * @returns corners, excitation and tables at the orders present
  * @source method-network
  */
 export function siteNetwork(
   supply: Supply,
   loads: Loads,
-  site: { nominalV: number; loadA: number; topology: Topology | null },
+  site: { nominalV: number; loadA: number; topology: Topology | null; primary?: boolean },
 ): NetworkModel {
   const { nominalV, loadA, topology } = site;
   const damping = { nominalV, motorSharePct: loads.motorSharePct };
@@ -96,6 +99,7 @@ export function siteNetwork(
     nodal,
     buses: topology === null ? ['main'] : topology.buses,
     bankBus: topology?.bankBus ?? 0,
+    primary: site.primary === true && supply.transformers.length > 0,
   };
   model.atOrders = corners.networks.map((_, network) => tableAt(model, network, present.ordersH));
   model.drives = model.atOrders.map((table) => drive(table, present));

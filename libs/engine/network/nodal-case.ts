@@ -138,7 +138,14 @@ function dampingLoads(topology: Topology, damping: NodalDamping): { bus: number;
   });
 }
 
-function joinedNodes(topology: Topology, state: NetworkState): Int32Array {
+/**
+ * Node of each bus: buses joined by closed couplers are one.
+ * @param topology settled topology
+ * @param state how it stands
+ * @returns nodes, counted from 0
+ * @source method-network
+ */
+export function joinedNodes(topology: Topology, state: NetworkState): Int32Array {
   const group = topology.buses.map((_, i) => i);
   for (const [i, { from, to }] of topology.couplers.entries()) {
     if (!state.closedCouplers[i]) continue;

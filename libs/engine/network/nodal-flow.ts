@@ -28,6 +28,7 @@ export function nodalFlowInto(model: NetworkModel, stages: readonly ComplexColum
       flow.buses[bus]!.voltageV[i] = v;
       squares[bus]! += v * v;
     }
+    if (flow.primary !== null) flow.primary.voltageV[i] = at.voltageV(nodalCase.sourceNode);
     const bankV = flow.buses[model.bankBus]!.voltageV[i]!;
     flow.voltageV[i] = bankV;
     flow.sourceA[i] = at.sourceA();

@@ -8,6 +8,8 @@ export interface TopologyBasis {
   frequencyHz: number;
   /** bus named by each transformer of the supply, in order */
   transformerBuses: readonly (string | undefined)[];
+  /** where the meter stands; at the primary that is the point of coupling unless another is named */
+  meteredAt?: 'bus' | 'primary';
   /** fills in a capacitor's defaults */
   group(input: NonNullable<NetworkInput['capacitors']>[number]): StageGroup;
 }
@@ -70,7 +72,8 @@ export function settleTopology(input: NetworkInput, basis: TopologyBasis): Topol
 }
 
 function couplingPoint(input: NetworkInput, names: Names, basis: TopologyBasis): Topology['couplingPoint'] {
-  const place = input.couplingPoint ?? input.bankBus ?? input.buses[0]!.name;
+  const metered = basis.meteredAt === 'primary' && basis.transformerBuses.length > 0 ? 'primary' : undefined;
+  const place = input.couplingPoint ?? metered ?? input.bankBus ?? input.buses[0]!.name;
   if (place !== 'primary') return names.at(place, 'network.couplingPoint');
   if (basis.transformerBuses.length > 0) return 'primary';
   names.problems.push({

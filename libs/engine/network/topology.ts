@@ -57,7 +57,7 @@ export interface NetworkInput {
   capacitors?: CapacitorInput[];
   /** bus the bank stands at; the first where absent */
   bankBus?: string;
-  /** bus whose voltage the limits are held against, or "primary"; the bank's bus where absent */
+  /** bus whose voltage the limits are held against, or "primary"; where absent the primary if the meter stands there, else the bank's bus */
   couplingPoint?: string;
   /** also judged with each transformer out in turn */
   transformerOut?: boolean;

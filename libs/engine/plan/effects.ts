@@ -1,3 +1,4 @@
+import { couplesAtPrimary } from '../duty/limits-point.js';
 import { firmVerdict } from '../duty/quick-judge.js';
 import type { Verdict } from '../duty/rules.js';
 import type { Bank } from '../layout/bank.js';
@@ -142,7 +143,12 @@ function mostMoved(
 
 function judged(study: Judged, control: Control, { site, bank }: Moved): Weighed {
   const { supply, loads, nominalV, topology } = site;
-  const model = siteNetwork(supply, loads, { nominalV, loadA: study.model.loadA, topology });
+  const model = siteNetwork(supply, loads, {
+    nominalV,
+    loadA: study.model.loadA,
+    topology,
+    primary: couplesAtPrimary(study.site),
+  });
   const basis = { ...basisOf(study, control), voltages: { nominalV, highestV: site.highestV }, supply, loads };
   const found = firmVerdict(model, bank, basis);
   const ratios = new Map<string, number>();

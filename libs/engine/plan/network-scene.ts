@@ -1,3 +1,4 @@
+import { couplesAtPrimary } from '../duty/limits-point.js';
 import type { Bank } from '../layout/bank.js';
 import { bankLevels, type Level } from '../layout/levels.js';
 import type { CornerCase } from '../network/corners.js';
@@ -35,7 +36,12 @@ export function networkScene(site: Site): NetworkScene {
     site: settled,
     bank,
     levels: bankLevels(bank, nominalV),
-    model: siteNetwork(settled.supply, settled.loads, { nominalV, loadA: 0, topology }),
+    model: siteNetwork(settled.supply, settled.loads, {
+      nominalV,
+      loadA: 0,
+      topology,
+      primary: couplesAtPrimary(settled),
+    }),
   };
 }
 

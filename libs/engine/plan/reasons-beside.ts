@@ -51,7 +51,6 @@ export function reasonsBeside(
     ...riseReasons(beside.devices, duties),
     ...measuredReasons(beside.measured, judged.site.facts.measured?.bankKvar ?? 0),
     ...(bank.groups.length === 0 ? [] : [...ageingReasons(beside.ageing), ...loadReasons(judged, control)]),
-    ...pointReasons(beside.limits),
   ];
 }
 
@@ -143,11 +142,6 @@ function loadReasons(judged: Judged, control: Control): Remark[] {
   return found;
 }
 
-function pointReasons({ voltage, points, couplingPoint, atCouplingPoint }: LimitsPoint): Remark[] {
-  if (atCouplingPoint) return [];
-  return [remark('limits.notCouplingPoint', { edition: voltage, point: points.join(', '), couplingPoint })];
-}
-
 /**
  * Where a transformer lies between the bus and the network, that the bus is the point of coupling is an assumption.
  * @param judged settled site and its network
@@ -156,7 +150,7 @@ function pointReasons({ voltage, points, couplingPoint, atCouplingPoint }: Limit
  */
 export function pointAssumption(judged: Judged, limits: LimitsPoint): Remark[] {
   const { site } = judged;
-  if (site.topology !== null || site.supply.transformers.length === 0 || !limits.atCouplingPoint) return [];
+  if (site.topology !== null || site.supply.transformers.length === 0 || limits.couplingPoint === 'primary') return [];
   return [remark('default.limits.point', { point: limits.couplingPoint }, { path: 'meteredAt' })];
 }
 

@@ -1,3 +1,4 @@
+import { couplesAtPrimary } from '../duty/limits-point.js';
 import { type FirmVerdict, firmVerdict } from '../duty/quick-judge.js';
 import type { Verdict } from '../duty/rules.js';
 import type { Bank } from '../layout/bank.js';
@@ -124,7 +125,12 @@ function judgeMoved(
   const strength = quantity === 'fault level' ? factor : 1;
   const supply = { ...site.supply, faultLevelMva: { max: max * strength, min: min * strength } };
   const loadA = quantity === 'load' ? model.loadA * factor : model.loadA;
-  const moved = siteNetwork(supply, loads, { nominalV: site.nominalV, loadA, topology: site.topology });
+  const moved = siteNetwork(supply, loads, {
+    nominalV: site.nominalV,
+    loadA,
+    topology: site.topology,
+    primary: couplesAtPrimary(site),
+  });
   const aged = quantity === 'capacitance' ? withCapacitance(bank, factor) : bank;
   const basis = { ...basisOf(study, control), supply, loads };
   return firmVerdict(moved, aged, basis);

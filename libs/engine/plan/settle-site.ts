@@ -29,6 +29,7 @@ export function settledTopology(site: Site): Topology | null {
   return settleTopology(site.network, {
     nominalV: site.bus.nominalV,
     frequencyHz: site.frequencyHz,
+    ...(site.meteredAt === undefined ? {} : { meteredAt: site.meteredAt }),
     transformerBuses: (site.supply.transformers ?? []).map(({ bus }) => bus),
     group: (capacitor) => settleBank({ stages: [capacitor], interStageUh: 1 }, site.frequencyHz).bank.groups[0]!,
   });

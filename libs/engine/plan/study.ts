@@ -1,3 +1,4 @@
+import { couplesAtPrimary } from '../duty/limits-point.js';
 import type { Bank } from '../layout/bank.js';
 import { type NetworkModel, siteNetwork } from '../network/network-model.js';
 import type { Control } from '../operation/control.js';
@@ -11,10 +12,10 @@ import { tanFromPowerFactor } from '../quantity/power-factor.js';
 import type { LoadRecord } from '../record/load-record.js';
 import { type RecordSummary, summarizeRecord } from '../record/record-summary.js';
 import { type MonthIndex, monthIndex, type ZoneTable } from '../record/zone-table.js';
-import { type BusLoad, busLoad, type Metering, type OldBank } from '../requirement/bus-load.js';
+import { type BusLoad, busLoad, type OldBank } from '../requirement/bus-load.js';
 import { needColumn, type Target, targetKw } from '../requirement/need.js';
 import { type RequirementSummary, summarizeRequirement } from '../requirement/requirement.js';
-import { transformerPassage } from '../supply/transformer-passage.js';
+import { meteringOf } from './metering-of.js';
 import { settleSite } from './settle-site.js';
 import type { SettledSite } from './settled-site.js';
 import type { Site } from './site.js';
@@ -47,9 +48,7 @@ export interface Study {
  */
 export function studySite(site: Site, record: LoadRecord, zone: ZoneTable): Study {
   const { site: settled, assumptions } = settleSite(site, record);
-  const metering: Metering =
-    settled.meteredAt === 'primary' ? { at: 'primary', passage: transformerPassage(settled.supply) } : { at: 'bus' };
-  const load = busLoad(record, metering, oldBank(settled));
+  const load = busLoad(record, meteringOf(settled), oldBank(settled));
   const target: Target = { powerFactor: settled.targetPowerFactor, onExport: settled.onExport };
   const needKvar = needColumn(load, target, record.beginS);
   const months = monthIndex(record.beginS, zone);
@@ -72,6 +71,7 @@ export function studySite(site: Site, record: LoadRecord, zone: ZoneTable): Stud
       nominalV: settled.nominalV,
       loadA,
       topology: settled.topology,
+      primary: couplesAtPrimary(settled),
     }),
     voltageScale: record.voltageV?.map((u) => (u / settled.nominalV) ** 2) ?? null,
   };

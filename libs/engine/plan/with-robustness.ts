@@ -1,3 +1,4 @@
+import { couplesAtPrimary } from '../duty/limits-point.js';
 import { COMMON_CATALOGUE } from '../layout/candidates.js';
 import { siteNetwork } from '../network/network-model.js';
 import { Stopped, type Watch } from '../problem.js';
@@ -21,7 +22,10 @@ export function withRobustness<T extends BankOutcome>(outcome: T, watch?: Watch)
   const { site, bank, result } = outcome;
   if (bank.groups.length === 0) return outcome;
   const { supply, loads, nominalV, topology } = site;
-  const judged: Judged = { site, model: siteNetwork(supply, loads, { nominalV, loadA: outcome.loadA, topology }) };
+  const judged: Judged = {
+    site,
+    model: siteNetwork(supply, loads, { nominalV, loadA: outcome.loadA, topology, primary: couplesAtPrimary(site) }),
+  };
   const step = (fraction: number): void => {
     if (watch?.stopped()) throw new Stopped('stopped while moving the inputs');
     watch?.report(fraction);
