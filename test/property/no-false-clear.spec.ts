@@ -84,7 +84,7 @@ function oneBusSite(random: Chance): Site {
 
 // A row without a level or a corner holds at every one of them: a closing, a resistor.
 const EVERYWHERE = ['discharge', 'inrush current', 'inrush current, exact'];
-const OF_ONE_ORDER = ['harmonic voltage', 'harmonic current'];
+const OF_ONE_ORDER = ['harmonic voltage', 'harmonic voltage at the primary', 'harmonic current'];
 
 function incomplete({ name, value, limit, levelKvar, corner, orderH }: Duty): boolean {
   if (!Number.isFinite(value) || limit === null) return true;

@@ -27,6 +27,12 @@ interface Baseline {
 interface MetVoltages extends BusFlow {
   without: { distortionPct: number; voltagePct: Float64Array };
   limits: VoltageLimits<number | null>;
+  rows: VoltageRows;
+}
+
+interface VoltageRows {
+  distortion: DutyRow;
+  voltage: DutyRow;
 }
 
 /** Limits of the network at the bus. */
@@ -67,7 +73,7 @@ export class NetworkDuties {
   readonly #limits: NetworkLimits;
   readonly #known: boolean;
   readonly #baselines: Baseline[] = [];
-  readonly #rows: Record<'distortion' | 'voltage' | 'currentDistortion' | 'current', DutyRow>;
+  readonly #rows: Record<'currentDistortion' | 'current', DutyRow> & { buses: VoltageRows; primary: VoltageRows };
   /** exceeded somewhere, and by no more than without the bank */
   exceededAlready = false;
 
@@ -84,8 +90,14 @@ export class NetworkDuties {
       new DutyRow({ name, group: null, unit: '%', source, nearRatio: NEAR_RATIO.other });
     const currentSource = limits.current?.source ?? '';
     this.#rows = {
-      distortion: head('voltage distortion', limits.voltage.source),
-      voltage: head('harmonic voltage', limits.voltage.source),
+      buses: {
+        distortion: head('voltage distortion', limits.voltage.source),
+        voltage: head('harmonic voltage', limits.voltage.source),
+      },
+      primary: {
+        distortion: head('voltage distortion at the primary', limits.primary.source),
+        voltage: head('harmonic voltage at the primary', limits.primary.source),
+      },
       currentDistortion: head('current distortion', currentSource),
       current: head('harmonic current', currentSource),
     };
@@ -116,10 +128,19 @@ export class NetworkDuties {
     const place: Place = { levelKvar: flow.levelKvar, corner: flow.corner.corner, orderH: null };
     for (const [bus, found] of flow.buses.entries()) {
       const without = { distortionPct: baseline.distortionPct[bus]!, voltagePct: baseline.voltagePct[bus]! };
-      this.#takeVoltages(flow, { ...found, without, limits: this.#limits.voltage }, this.#at(place, bus));
+      this.#takeVoltages(
+        flow,
+        { ...found, without, limits: this.#limits.voltage, rows: this.#rows.buses },
+        this.#at(place, bus),
+      );
     }
     if (flow.primary !== null) {
-      const met = { ...flow.primary, without: baseline.primary!, limits: this.#limits.primary };
+      const met = {
+        ...flow.primary,
+        without: baseline.primary!,
+        limits: this.#limits.primary,
+        rows: this.#rows.primary,
+      };
       this.#takeVoltages(flow, met, { ...place, bus: 'primary' });
     }
     this.#takeCurrents(flow, baseline, place);
@@ -130,12 +151,9 @@ export class NetworkDuties {
     return this.#model.buses.length === 1 ? place : { ...place, bus: this.#model.buses[bus]! };
   }
 
-  #takeVoltages(
-    { ordersH }: Flow,
-    { voltageV, voltageDistortionPct, without, limits }: MetVoltages,
-    place: Place,
-  ): void {
-    this.#takeAgainst(this.#rows.distortion, place, {
+  #takeVoltages({ ordersH }: Flow, met: MetVoltages, place: Place): void {
+    const { voltageV, voltageDistortionPct, without, limits, rows } = met;
+    this.#takeAgainst(rows.distortion, place, {
       value: voltageDistortionPct,
       limit: limits.distortionPct,
       without: without.distortionPct,
@@ -145,7 +163,7 @@ export class NetworkDuties {
       const limit = limits.orderPct(orderH);
       if (limit === null) continue;
       const value = this.#voltagePct(voltageV[i]!);
-      this.#takeAgainst(this.#rows.voltage, { ...place, orderH }, { value, limit, without: without.voltagePct[i]! });
+      this.#takeAgainst(rows.voltage, { ...place, orderH }, { value, limit, without: without.voltagePct[i]! });
     }
   }
 
@@ -189,7 +207,8 @@ export class NetworkDuties {
 
   /** @returns the rows; with unknown loads what was found within limits is not judged */
   duties(): Duty[] {
-    return Object.values(this.#rows)
+    const { buses, primary, currentDistortion, current } = this.#rows;
+    return [...Object.values(buses), ...Object.values(primary), currentDistortion, current]
       .flatMap((row) => row.duty() ?? [])
       .map((duty) => (this.#known || duty.verdict !== 'clear' ? duty : { ...duty, verdict: null }));
   }
