@@ -5,6 +5,7 @@ export * from './duty/cabinet-heat.js';
 export * from './duty/charge.js';
 export * from './duty/closing-circuit.js';
 export * from './duty/closing-netlist.js';
+export * from './duty/closing-parts.js';
 export * from './duty/closing-standings.js';
 export * from './duty/controller-devices.js';
 export * from './duty/current-limits.js';

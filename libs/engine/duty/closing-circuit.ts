@@ -1,5 +1,6 @@
 import { type ComplexNumber, cAbs, cAdd, cDivide, cMultiply, cSubtract } from '../quantity/complex-number.js';
-import { type ClosingCircuit, LoopImpedance, mergedBranches } from './loop-impedance.js';
+import type { ClosingCircuit } from './closing-parts.js';
+import { LoopImpedance, mergedBranches } from './loop-impedance.js';
 import { NetworkLoop } from './network-loop.js';
 
 /** The greatest current of the closing branch over every closing instant. */

@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import { closingNetlist } from './closing-netlist.js';
-import type { ClosingCircuit } from './loop-impedance.js';
+import type { ClosingCircuit } from './closing-parts.js';
 
 const plain: ClosingCircuit = {
   sourceOhm: 0,

@@ -1,8 +1,8 @@
 import { netlistComment } from '../network/network-netlist.js';
 import { type ComplexNumber, cMultiply, cSubtract } from '../quantity/complex-number.js';
 import { closingPeak } from './closing-circuit.js';
-import type { ClosingCircuit, SeriesBranch } from './loop-impedance.js';
-import { admittance, type ClosingNetwork, type NetworkBranch, NetworkLoop } from './network-loop.js';
+import type { ClosingCircuit, ClosingNetwork, NetworkBranch, SeriesBranch } from './closing-parts.js';
+import { admittance, NetworkLoop } from './network-loop.js';
 
 /**
  * The circuit of a closing as a plain SPICE netlist, for a second opinion: resistances at their fundamental value, the

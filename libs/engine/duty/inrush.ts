@@ -2,9 +2,8 @@ import type { Bank, StageGroup } from '../layout/bank.js';
 import { ratedA, stageOhm } from '../layout/stage.js';
 import { bankStates, stageKinds } from '../network/stage-kinds.js';
 import { closingPeak } from './closing-circuit.js';
+import type { ClosingCircuit, ClosingNetwork, SeriesBranch } from './closing-parts.js';
 import type { ClosingStanding } from './closing-standings.js';
-import type { ClosingCircuit, SeriesBranch } from './loop-impedance.js';
-import type { ClosingNetwork } from './network-loop.js';
 import { CAPACITOR_RULES, type RuleSet } from './rules.js';
 
 /** Peak current of closing one stage of a group, closed forms. */

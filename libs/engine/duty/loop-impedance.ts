@@ -1,30 +1,6 @@
 import { type ComplexNumber, cAdd, cDivide, cMultiply, cScale, cSubtract } from '../quantity/complex-number.js';
 import { improvedRoots } from './aberth.js';
-import type { ClosingNetwork } from './network-loop.js';
-
-/** A series branch at the fundamental's resistance: R + sL + 1/(sC); inductance 0 for a plain stage. */
-export interface SeriesBranch {
-  rOhm: number;
-  /** [H] */
-  inductanceH: number;
-  /** [F], > 0 */
-  capacitanceF: number;
-}
-
-/** The circuit into which one uncharged branch is closed, per phase. */
-export interface ClosingCircuit {
-  /** source and transformer [Ω] and [H], inductance > 0 */
-  sourceOhm: number;
-  sourceH: number;
-  /** what is connected already, in its steady state */
-  connected: SeriesBranch[];
-  closing: SeriesBranch;
-  /** takes the source's place where other capacitors stand behind an impedance */
-  network?: ClosingNetwork;
-  /** crest of the source's phase voltage [V] */
-  crestV: number;
-  frequencyHz: number;
-}
+import type { ClosingCircuit, SeriesBranch } from './closing-parts.js';
 
 const ONE: ComplexNumber = { re: 1, im: 0 };
 

@@ -1,23 +1,7 @@
 import { type ComplexNumber, cAbs, cAdd, cDivide, cMultiply, cScale, cSubtract } from '../quantity/complex-number.js';
 import { invertInto } from '../network/nodal-impedance.js';
 import { improvedRoots } from './aberth.js';
-import type { SeriesBranch } from './loop-impedance.js';
-
-/** A series branch of a network at the fundamental's resistance; capacitance 0 where there is no capacitor. */
-export interface NetworkBranch extends SeriesBranch {
-  from: number;
-  /** −1 is earth */
-  to: number;
-  /** the far end is the source's voltage instead of earth */
-  driven: boolean;
-}
-
-/** The network round a closing, where capacitors stand apart from the bank. */
-export interface ClosingNetwork {
-  nodes: number;
-  bankNode: number;
-  branches: NetworkBranch[];
-}
+import type { ClosingNetwork, NetworkBranch, SeriesBranch } from './closing-parts.js';
 
 const ONE: ComplexNumber = { re: 1, im: 0 };
 /** Equal feeders have modes the bank does not see; parts a millionth apart keep each mode by itself. */
