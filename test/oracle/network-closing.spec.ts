@@ -1,6 +1,5 @@
 // Reference: ngspice 45 as packed in eecircuit-engine 1.8.0, a general-purpose circuit simulator: transients of the whole
-// network round a closing, other capacitors at other buses in their steady state. Second method: the same network with its
-// capacitors moved to the bank's own bus, where the circuit is a single loop.
+// network round a closing, other capacitors at other buses in their steady state.
 import { beforeAll, describe, expect, it } from 'vitest';
 import {
   type Closing,
@@ -9,6 +8,7 @@ import {
   closingStandings,
   closings,
   networkScene,
+  type Site,
 } from '#libs/engine/index.js';
 import { chance } from '../support/chance.js';
 import { CircuitSimulator } from '../support/circuit-simulator.js';
@@ -21,8 +21,15 @@ beforeAll(() => simulator.start(), 60_000);
 /** The stated limit: a tenth of a per cent of the simulator's transient. */
 const RELATIVE = 1e-3;
 
+// Between two capacitors a cable without any reactance makes the current jump, and a transient of finite steps begins late.
+function withReactance(site: Site): Site {
+  const network = site.network!;
+  const cables = network.cables!.map((cable) => ({ ...cable, reactanceOhmPerKm: cable.reactanceOhmPerKm || 0.08 }));
+  return { ...site, network: { ...network, cables } };
+}
+
 function allClosings(number: number): Closing[] {
-  const site = madeBuses(chance(SEED + 613 * number));
+  const site = withReactance(madeBuses(chance(SEED + 613 * number)));
   const { bank, levels, model } = networkScene(site);
   const place = {
     nominalV: site.bus.nominalV,
@@ -52,6 +59,6 @@ describe(`closing in a network with other capacitors, against a circuit simulato
       const { value } = await simulator.greatest(netlist, 'i(vclosing)');
       expect(Math.abs(value / peakA - 1), JSON.stringify({ peakA, value, circuit })).toBeLessThan(RELATIVE);
     },
-    120_000,
+    300_000,
   );
 });

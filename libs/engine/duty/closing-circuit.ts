@@ -1,5 +1,5 @@
 import { type ComplexNumber, cAbs, cAdd, cDivide, cMultiply, cSubtract } from '../quantity/complex-number.js';
-import type { ClosingCircuit } from './closing-branches.js';
+import type { ClosingCircuit } from './closing-parts.js';
 import { LoopImpedance, mergedBranches } from './loop-impedance.js';
 import { NetworkLoop } from './network-loop.js';
 

@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest';
-import type { ClosingCircuit } from './closing-branches.js';
 import { closingNetlist } from './closing-netlist.js';
+import type { ClosingCircuit } from './closing-parts.js';
 
 const plain: ClosingCircuit = {
   sourceOhm: 0,

@@ -1,7 +1,7 @@
 import { netlistComment } from '../network/network-netlist.js';
 import { type ComplexNumber, cMultiply, cSubtract } from '../quantity/complex-number.js';
-import type { ClosingCircuit, ClosingNetwork, NetworkBranch, SeriesBranch } from './closing-branches.js';
 import { closingPeak } from './closing-circuit.js';
+import type { ClosingCircuit, ClosingNetwork, NetworkBranch, SeriesBranch } from './closing-parts.js';
 import { admittance, NetworkLoop } from './network-loop.js';
 
 /**

@@ -4,7 +4,7 @@ import { networkStates } from '../network/network-states.js';
 import { type NodalCase, nodalCase } from '../network/nodal-case.js';
 import type { NetworkState } from '../network/topology.js';
 import type { SeriesOhm } from '../supply/supply-path.js';
-import type { ClosingNetwork, NetworkBranch, SeriesBranch } from './closing-branches.js';
+import type { ClosingNetwork, NetworkBranch, SeriesBranch } from './closing-parts.js';
 import { mergedBranches } from './loop-impedance.js';
 
 /** What a stage is closed onto besides its own bank, supply at its strongest, loads left out. */

@@ -1,8 +1,8 @@
 import type { Bank, StageGroup } from '../layout/bank.js';
 import { ratedA, stageOhm } from '../layout/stage.js';
 import { bankStates, stageKinds } from '../network/stage-kinds.js';
-import type { ClosingCircuit, ClosingNetwork, SeriesBranch } from './closing-branches.js';
 import { closingPeak } from './closing-circuit.js';
+import type { ClosingCircuit, ClosingNetwork, SeriesBranch } from './closing-parts.js';
 import type { ClosingStanding } from './closing-standings.js';
 import { CAPACITOR_RULES, type RuleSet } from './rules.js';
 

@@ -1,6 +1,6 @@
 import { type ComplexNumber, cAdd, cDivide, cMultiply, cScale, cSubtract } from '../quantity/complex-number.js';
 import { improvedRoots } from './aberth.js';
-import type { ClosingCircuit, SeriesBranch } from './closing-branches.js';
+import type { ClosingCircuit, SeriesBranch } from './closing-parts.js';
 
 const ONE: ComplexNumber = { re: 1, im: 0 };
 

@@ -1,7 +1,7 @@
-import { invertInto } from '../network/nodal-impedance.js';
 import { type ComplexNumber, cAbs, cAdd, cDivide, cMultiply, cScale, cSubtract } from '../quantity/complex-number.js';
+import { invertInto } from '../network/nodal-impedance.js';
 import { improvedRoots } from './aberth.js';
-import type { ClosingNetwork, NetworkBranch, SeriesBranch } from './closing-branches.js';
+import type { ClosingNetwork, NetworkBranch, SeriesBranch } from './closing-parts.js';
 
 const ONE: ComplexNumber = { re: 1, im: 0 };
 /** Equal feeders have modes the bank does not see; parts a millionth apart keep each mode by itself. */

@@ -1,12 +1,12 @@
+import { couplesAtPrimary } from '../duty/limits-point.js';
 import { siteNetwork } from '../network/network-model.js';
 import { InputProblem, type Remark, remark } from '../problem.js';
 import type { ZoneTable } from '../record/zone-table.js';
-import type { Metering } from '../requirement/bus-load.js';
 import type { EquipmentEntry } from '../requirement/estimate-input.js';
 import { type LoadEstimate, loadEstimate } from '../requirement/load-estimate.js';
 import type { Target } from '../requirement/need.js';
-import { transformerPassage } from '../supply/transformer-passage.js';
 import type { Judged } from './judge-basis.js';
+import { meteringOf } from './metering-of.js';
 import { settleSite } from './settle-site.js';
 import type { SettledSite } from './settled-site.js';
 import type { Site } from './site.js';
@@ -40,8 +40,7 @@ export function studyEstimate(site: Site, zone: ZoneTable): EstimateStudy {
     throw new InputProblem([{ code: 'inconsistent', path: 'recordedBank.state', expected, found: '"logged"' }]);
   }
   const { site: settled, assumptions } = settleSite(site, null);
-  const metering: Metering =
-    settled.meteredAt === 'primary' ? { at: 'primary', passage: transformerPassage(settled.supply) } : { at: 'bus' };
+  const metering = meteringOf(settled);
   const target: Target = { powerFactor: settled.targetPowerFactor, onExport: settled.onExport };
   const addedKvar = settled.recordedBank.state === 'fixed' ? settled.recordedBank.kvar : 0;
   const load = loadEstimate(estimate, { zone, metering, target, addedKvar });
@@ -53,7 +52,7 @@ export function studyEstimate(site: Site, zone: ZoneTable): EstimateStudy {
     target,
     load,
     assumptions: [...assumptions.map(withoutRecord), ...loadLines(settled, load, estimate.equipment ?? [], loadA)],
-    model: siteNetwork(supply, loads, { nominalV, loadA, topology }),
+    model: siteNetwork(supply, loads, { nominalV, loadA, topology, primary: couplesAtPrimary(settled) }),
   };
 }
 
