@@ -1,15 +1,13 @@
 import { couplesAtPrimary } from '../duty/limits-point.js';
 import type { Bank } from '../layout/bank.js';
 import { type NetworkModel, siteNetwork } from '../network/network-model.js';
-import { networkStates } from '../network/network-states.js';
-import { joinedNodes } from '../network/nodal-case.js';
 import type { Control } from '../operation/control.js';
 import type { ControllerView } from '../operation/controller-view.js';
 import { type MeterAfter, meterAfter } from '../operation/meter-after.js';
 import { type OperationMonth, operationMonths, type Simulated } from '../operation/operation.js';
 import { simulate } from '../operation/simulate.js';
 import { switchedBank } from '../operation/switched-bank.js';
-import { InputProblem, type Remark, remark } from '../problem.js';
+import { type Remark, remark } from '../problem.js';
 import { tanFromPowerFactor } from '../quantity/power-factor.js';
 import type { LoadRecord } from '../record/load-record.js';
 import { type RecordSummary, summarizeRecord } from '../record/record-summary.js';
@@ -37,28 +35,6 @@ export interface Study {
   model: NetworkModel;
   /** (U/U_nom)² per interval, or null */
   voltageScale: Float64Array | null;
-}
-
-// One record at the primary of boards of their own does not say how its load divides among them, and the need at one board
-// depends on it: refused rather than taken through all transformers in parallel.
-function meteringOf({ meteredAt, supply, topology }: SettledSite): Metering {
-  if (meteredAt === 'bus') return { at: 'bus' };
-  if (topology !== null) {
-    const node = joinedNodes(topology, networkStates(topology)[0]!);
-    const fed = [...new Set(topology.transformerBus.map((bus) => node[bus]!))];
-    if (fed.length > 1) {
-      const boards = fed.map((each) => `"${topology.buses[node.indexOf(each)]}"`).join(', ');
-      throw new InputProblem([
-        {
-          code: 'inconsistent',
-          path: 'meteredAt',
-          expected: '"bus", with the record of the bank’s own board, where transformers feed boards of their own',
-          found: `"primary", one record for the boards ${boards}`,
-        },
-      ]);
-    }
-  }
-  return { at: 'primary', passage: transformerPassage(supply) };
 }
 
 /**
