@@ -21,6 +21,7 @@ import { reasons } from './reasons.js';
 import { type Beside, copyNote, pointAssumption, reasonsBeside, verdictBeside } from './reasons-beside.js';
 import type { Result } from './result.js';
 import { type Operated, operate, type Study } from './study.js';
+import type { PricedWays } from './weighed-bank.js';
 
 /** Reactor ratio of the comparison where the bank is plain [%]. */
 const RIVAL_REACTOR_PCT = 7;
@@ -44,6 +45,8 @@ export interface Choice {
   operated?: Operated;
   /** what it costs and saves, from the bank simulated */
   money?: (operated: Operated) => Money;
+  /** what was weighed by its money */
+  priced?: PricedWays | undefined;
 }
 
 /**
@@ -114,6 +117,7 @@ export function outcomeOf(kind: Outcome['kind'], study: Study, choice: Choice): 
     loadA: study.model.loadA,
     margins: marginMap(study.model, bank, levels, basisOf(study, control)),
     rival: rivalOf(study, choice, result.verdict),
+    priced: choice.priced ?? null,
   };
 }
 

@@ -100,6 +100,8 @@ export function moneyOf(money: MoneyStudy, priced: Priced, choice: MoneyChoice):
     monthsFilled: priced.saving.monthsFilled,
     alternatives: choice.alternatives,
     proof: choice.proof,
+    savingRange: null,
+    robustness: null,
     ...(priced.worth ?? NO_WORTH),
   };
 }

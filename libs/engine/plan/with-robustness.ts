@@ -3,13 +3,18 @@ import { siteNetwork } from '../network/network-model.js';
 import { Stopped, type Watch } from '../problem.js';
 import { withEffects } from './effects.js';
 import type { Judged } from './judge-basis.js';
+import { withMoneyEffects } from './money-effects.js';
+import { MoneyMover, moneyRobustness, type WeighedWays } from './money-robustness.js';
+import { moneyStudy } from './money-study.js';
 import type { Outcome } from './outcome.js';
 import { reactorTrials } from './reactor-choice.js';
 import { robustness } from './robustness.js';
+import { studySite } from './study.js';
+import { scaleOf } from './weigh-again.js';
 
 /**
  * The same outcome with what says how firm it is: ranges in which the verdict stands, one stage out, the effect of each
- * assumption, and the customary reactor ratios side by side. Some sixty judgements: apart, so that a bank under the
+ * assumption, the customary reactor ratios side by side, and how firm the money is. Some sixty judgements: apart, so that a bank under the
  * hand needn't wait for them.
  * @param outcome of planBank or assessBank
  * @param watch progress and stopping
@@ -19,7 +24,8 @@ import { robustness } from './robustness.js';
  */
 export function withRobustness(outcome: Outcome, watch?: Watch): Outcome {
   const { site, bank, result } = outcome;
-  if (bank.groups.length === 0) return outcome;
+  const weighed = weighedWays(outcome);
+  if (bank.groups.length === 0) return withMoney(outcome, weighed);
   const { supply, loads, nominalV, topology } = site;
   const judged: Judged = { site, model: siteNetwork(supply, loads, { nominalV, loadA: outcome.loadA, topology }) };
   const step = (fraction: number): void => {
@@ -32,5 +38,25 @@ export function withRobustness(outcome: Outcome, watch?: Watch): Outcome {
   step(0.8);
   const trials = reactorTrials(judged, bank, result.control, COMMON_CATALOGUE.ratedV);
   step(1);
-  return { ...outcome, result: { ...result, robustness: ranges, assumptions, reactorTrials: trials } };
+  const firm = { ...outcome, result: { ...result, robustness: ranges, assumptions, reactorTrials: trials } };
+  return withMoney(firm, weighed);
+}
+
+function weighedWays({ priced, record, zone }: Outcome): WeighedWays | null {
+  if (priced === null) return null;
+  const study = studySite(priced.site, record, zone);
+  const money = moneyStudy(study, priced.site);
+  return money && { scale: scaleOf(study, money), ways: priced.ways, chosen: priced.chosen };
+}
+
+function withMoney(outcome: Outcome, weighed: WeighedWays | null): Outcome {
+  const { result } = outcome;
+  if (weighed === null || result.money === null) return outcome;
+  const mover = new MoneyMover(weighed);
+  const table = moneyRobustness(weighed, mover);
+  const savingRange = table.ways.find(({ name }) => name === weighed.chosen)?.saving ?? null;
+  const money = { ...result.money, savingRange, robustness: table.ways.length === 0 ? null : table };
+  const assumptions =
+    savingRange === null ? result.assumptions : withMoneyEffects(result.assumptions, weighed, mover, savingRange);
+  return { ...outcome, result: { ...result, money, assumptions } };
 }
