@@ -3,6 +3,7 @@ import { deviceTable, openDevices } from './device-words.js';
 import { dutyName } from './figure-words.js';
 import { formatApart, formatNumber, formatQuantity, GAP } from './format-number.js';
 import { formatLength, formatMoment } from './local-stamp.js';
+import { moneyLines } from './money-lines.js';
 import { plainName } from './plain-name.js';
 import { proposedWords } from './proposed-words.js';
 import { remarkConsequence, remarkSentence } from './remark-words.js';
@@ -51,6 +52,7 @@ export function resultReport(outcome: Outcome): string {
       `${count.judged}: ${count.clear} within limits, ${count.watch} near a limit, ${count.avoid} over; ${count.notJudged} not judged`,
     ),
     '',
+    ...moneyRows(outcome),
     ...dutyLines(outcome),
     ...deviceLines(outcome),
     ...reasonLines(outcome),
@@ -132,6 +134,11 @@ function recordLines(record: RecordSummary, zone: ZoneTable): string[] {
     ),
     row('greatest demand', `${formatQuantity(record.maxKw, 'kW')}, ${formatQuantity(record.maxKva, 'kVA')}`),
   ];
+}
+
+function moneyRows(outcome: Outcome): string[] {
+  const lines = moneyLines(outcome);
+  return lines.length === 0 ? [] : [...lines.map(({ label, text }) => row(label, text)), ''];
 }
 
 function dutyLines({ result }: Outcome): string[] {

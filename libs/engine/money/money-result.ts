@@ -2,6 +2,7 @@ import type { Verdict } from '../duty/rules.js';
 import type { Bill } from './bill.js';
 import type { Capital } from './capital.js';
 import type { CashFlow } from './cash-flow.js';
+import type { ContractAdvice } from './contract-advice.js';
 import type { Payback, RateOfReturn } from './return-on-capital.js';
 import type { Running } from './running-cost.js';
 
@@ -144,6 +145,8 @@ export type Money = {
   /** empty where nothing was compared */
   alternatives: Alternative[];
   proof: SearchProof | null;
+  /** contracted demands and the values that would cost least; empty where the tariff has none */
+  contracts: ContractAdvice[];
   /** of the bank the result tells of; null without a bank, and until it is asked for */
   savingRange: SavingRange | null;
   /** null without a bank, and until it is asked for */

@@ -1,8 +1,8 @@
 import type { SettledFinance } from '../money/cash-flow.js';
 import type { SavingRange } from '../money/money-result.js';
 import type { Remark } from '../problem.js';
-import { LOAD_MOVES, type MoneyMover, type WeighedWays } from './money-robustness.js';
-import { operate } from './study.js';
+import type { MoneyMover, WeighedWays } from './money-mover.js';
+import { LOAD_MOVES } from './money-robustness.js';
 import { weighAgain } from './weigh-again.js';
 import type { WeighedBank } from './weighed-bank.js';
 
@@ -35,7 +35,7 @@ export function withMoneyEffects(
 ): Remark[] {
   const way = weighed.ways.find(({ name }) => name === weighed.chosen);
   if (way === undefined) return [...assumptions];
-  const npv = mover.at(way, 'load', 1)?.npv ?? null;
+  const { npv } = mover.present(way);
   return assumptions.map((line) => {
     if (line.code === 'money.idealControl') {
       const savings = saving.cases.map(({ savingPerYear }) => savingPerYear);
@@ -57,8 +57,7 @@ function endsOf(code: string, { scale }: WeighedWays, way: WeighedBank, mover: M
   if (PRICE_LINES.includes(code)) return known(PRICE_MOVES.map((factor) => mover.at(way, 'costs', factor)?.npv));
   const changes = FINANCE_RANGES[code];
   if (changes === undefined) return null;
-  const { bank, control } = way;
-  const operated = operate(scale.study, bank, control);
-  const working = { operated, bank, kept: bank };
+  const { bank } = way;
+  const working = { operated: mover.operated(way), bank, kept: bank };
   return known(changes.map((change) => weighAgain(scale, way, working, { ...scale.money.finance, ...change }).npv));
 }

@@ -15,14 +15,17 @@ const DAY_S = 86_400;
  * with the stage out whose loss costs most. The headline is the lower of the first two.
  * @param scale record and bills
  * @param way a way with a bank
+ * @param known the way as simulated, and with a stage out
  * @returns the range
  * @source method-money
  */
-export function savingRange(scale: Scale, way: WeighedBank): SavingRange {
-  const ideal = weighed(scale, way, way.bank, operate(scale.study, way.bank, way.control));
+export function savingRange(
+  scale: Scale,
+  way: WeighedBank,
+  { ideal, stageOut }: { ideal: WorthAgain; stageOut: WorthAgain },
+): SavingRange {
   const late = weighed(scale, way, way.bank, operatedLate(scale.study, way));
   const available = weighed(scale, way, way.bank, operatedInPart(scale.study, way));
-  const stageOut = worstStageOut(scale, way);
   const cases: SavingCase[] = [
     { name: 'ideal', ...told(ideal) },
     { name: 'one interval late', ...told(late) },
