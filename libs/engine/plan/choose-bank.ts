@@ -109,7 +109,9 @@ class Chooser {
   }
 
   #bank(layout: Layout, ratedV: number, reactorPct: number): Bank {
-    return bankOf(layout, { ratedV, reactorPct, reactorQuality: REACTOR_QUALITY, catalogue: this.#catalogue });
+    const { nominalV } = this.#study.site;
+    const built = { ratedV, nominalV, reactorPct, reactorQuality: REACTOR_QUALITY, catalogue: this.#catalogue };
+    return bankOf(layout, built);
   }
 
   #totalKvar(bank: Bank): number {
