@@ -17,6 +17,7 @@ const TRIED = {
   tariff: { least: 0.1, most: 10 },
 } satisfies Partial<Record<MoneyQuantity, { least: number; most: number }>>;
 
+/** A quantity that a factor is tried on. */
 export type TriedQuantity = keyof typeof TRIED;
 
 /** Every factor of load and capacitance is a simulation, those of money are arithmetic. */
