@@ -96,6 +96,7 @@ export * from './plan/settle-bank.js';
 export * from './plan/settled-site.js';
 export * from './plan/site.js';
 export * from './plan/site-netlist.js';
+export * from './plan/spare-ways.js';
 export * from './plan/study.js';
 export * from './plan/weighed-bank.js';
 export * from './plan/with-robustness.js';

@@ -7,6 +7,7 @@ import { moneyLines } from './money-lines.js';
 import { plainName } from './plain-name.js';
 import { proposedWords } from './proposed-words.js';
 import { remarkConsequence, remarkSentence } from './remark-words.js';
+import { spareWaysLines } from './spare-ways-lines.js';
 import { countDuties, NO_PERMISSION, verdictWords } from './verdict-words.js';
 
 const LABEL_WIDTH = 26;
@@ -53,6 +54,7 @@ export function resultReport(outcome: Outcome): string {
     ),
     '',
     ...moneyRows(outcome),
+    ...spareRows(outcome),
     ...dutyLines(outcome),
     ...deviceLines(outcome),
     ...reasonLines(outcome),
@@ -139,6 +141,11 @@ function recordLines(record: RecordSummary, zone: ZoneTable): string[] {
 function moneyRows(outcome: Outcome): string[] {
   const lines = moneyLines(outcome);
   return lines.length === 0 ? [] : [...lines.map(({ label, text }) => row(label, text)), ''];
+}
+
+function spareRows(outcome: Outcome): string[] {
+  const lines = spareWaysLines(outcome);
+  return lines.length === 0 ? [] : [...lines.map((text, k) => row(k === 0 ? 'room for more stages' : '', text)), ''];
 }
 
 function dutyLines({ result }: Outcome): string[] {

@@ -86,6 +86,7 @@ export function outcomeOf(kind: Outcome['kind'], study: Study, choice: Choice): 
     ...beside,
     robustness: null,
     reactorTrials: [],
+    spareWays: [],
     money: choice.money?.(operated) ?? null,
     verdict: graver(graver(overallVerdict(study, judgement), said.atBest ?? 'clear'), verdictBeside(beside)),
     reasons: [

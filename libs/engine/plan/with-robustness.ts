@@ -1,4 +1,5 @@
 import { COMMON_CATALOGUE } from '../layout/candidates.js';
+import type { CostBasis } from '../money/capital.js';
 import { siteNetwork } from '../network/network-model.js';
 import { Stopped, type Watch } from '../problem.js';
 import { withEffects } from './effects.js';
@@ -10,6 +11,7 @@ import { moneyStudy } from './money-study.js';
 import type { Outcome } from './outcome.js';
 import { reactorTrials } from './reactor-choice.js';
 import { robustness } from './robustness.js';
+import { spareWays } from './spare-ways.js';
 import { studySite } from './study.js';
 import { scaleOf } from './weigh-again.js';
 
@@ -38,9 +40,18 @@ export function withRobustness(outcome: Outcome, watch?: Watch): Outcome {
   const assumptions = withEffects(result.assumptions, judged, bank, result.control);
   step(0.8);
   const trials = reactorTrials(judged, bank, result.control, COMMON_CATALOGUE.ratedV);
+  const more = spareWays(judged, bank, result.control, costOf(outcome, weighed));
   step(1);
-  const firm = { ...outcome, result: { ...result, robustness: ranges, assumptions, reactorTrials: trials } };
+  const firm = {
+    ...outcome,
+    result: { ...result, robustness: ranges, assumptions, reactorTrials: trials, spareWays: more },
+  };
   return withMoney(firm, weighed);
+}
+
+function costOf({ result }: Outcome, weighed: WeighedWays | null): CostBasis | null {
+  const prices = weighed?.scale.money.prices ?? null;
+  return prices && { ...prices, switchKind: result.money?.switchKind ?? null };
 }
 
 function weighedWays({ priced, record, zone }: Outcome): WeighedWays | null {
