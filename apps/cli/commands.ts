@@ -12,7 +12,7 @@ const METER_DETAILS = `  --extend FILE      a further meter file that extends or
   --time-zone ZONE   zone of local stamps: "Europe/Dublin", "UTC", "+10:00"
 `;
 
-const PLAN_DETAILS = `  --load METER-FILE  the meter's record
+const PLAN_DETAILS = `  --load METER-FILE  the meter's record; without it the site's estimate (bills, equipment list)
   --pdf OUT          write the proposal there
 ${METER_DETAILS}`;
 
@@ -43,7 +43,7 @@ export const COMMANDS: Record<string, Command> = {
     values: { load: 'METER-FILE', pdf: 'OUT', ...METER_OPTIONS },
     lists: METER_LISTS,
     flags: ['json'],
-    does: "judge the site's own bank against the record",
+    does: "judge the site's own bank",
     details: PLAN_DETAILS,
     load: () => import('./assess.js'),
   },

@@ -43,7 +43,7 @@ export async function readJson(path: string): Promise<unknown> {
   for await (const chunk of bytes) {
     size += chunk.length;
     if (size > MOST_JSON_BYTES) throw refusal('too-large', `a file of at most ${MOST_JSON_BYTES} bytes`, 'more');
-    chunks.push(chunk.slice());
+    chunks.push(new Uint8Array(chunk));
   }
   return parseJson(Buffer.concat(chunks));
 }

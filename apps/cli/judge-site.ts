@@ -1,13 +1,15 @@
 import { createHash } from 'node:crypto';
 import { setImmediate as nextTurn } from 'node:timers/promises';
 import { EXIT } from '#libs/contract/error-body.js';
+import { estimateZone } from '#libs/contract/estimate-zone.js';
 import { frozenSite } from '#libs/contract/frozen-site.js';
-import { planContent } from '#libs/contract/plan-content.js';
+import { type PlanInputs, planContent } from '#libs/contract/plan-content.js';
 import { readSiteWithMathjs } from '#libs/contract/read-site-with-mathjs.js';
 import { recordBytes } from '#libs/contract/record-hash.js';
 import { zoneTableOf } from '#libs/contract/time-zone.js';
 import {
   ENGINE_VERSION,
+  type EstimateOutcome,
   InputProblem,
   type LoadRecord,
   type Outcome,
@@ -15,8 +17,8 @@ import {
   withRobustness,
   type ZoneTable,
 } from '#libs/engine/index.js';
-import { putInWords } from '#libs/present/put-in-words.js';
-import { resultReport } from '#libs/present/terminal-report.js';
+import { putEstimateInWords, putInWords } from '#libs/present/put-in-words.js';
+import { estimateReport, resultReport } from '#libs/present/terminal-report.js';
 import type { CommandLine } from './command.js';
 import { usage } from './command-line.js';
 import { readJson } from './input-file.js';
@@ -25,38 +27,81 @@ import { say, write, writeJson } from './output.js';
 import { proposalTarget } from './proposal-target.js';
 import { inFile } from './refused-file.js';
 
-type Judge = (site: Site, record: LoadRecord, zone: ZoneTable) => Outcome;
+/** The engine's two functions of one command: from a meter's record, and from the site's own estimate. */
+interface Judges {
+  record(site: Site, record: LoadRecord, zone: ZoneTable): Outcome;
+  estimate(site: Site, zone: ZoneTable): EstimateOutcome;
+}
+
+/** An answer in words, with what prints it. */
+interface Told {
+  outcome: Outcome | EstimateOutcome;
+  report: string;
+  contentHash: string;
+}
 
 /**
- * What `plan` and `assess` share: site and record in, answer and proposal out.
+ * What `plan` and `assess` share: site and record in, answer and proposal out. Without a meter file the site's estimate
+ * stands in for the record.
  * @param line what was typed
  * @param kind which of the two it is
- * @param judge the engine's function
+ * @param judges the engine's functions
  * @returns the exit code
  */
-export async function judgeSite(line: CommandLine, kind: Outcome['kind'], judge: Judge): Promise<number> {
+export async function judgeSite(line: CommandLine, kind: Outcome['kind'], judges: Judges): Promise<number> {
   const load = line.values.get('load');
-  if (load === undefined) throw new InputProblem([usage('--load METER-FILE', 'none')]);
   const pdf = line.values.get('pdf');
   const target = pdf === undefined ? null : await proposalTarget(pdf);
   const given = await inFile(line.operand, async () => readSiteWithMathjs(await readJson(line.operand)));
   const site = frozenSite(given, Date.now() / 1000);
+  if (load === undefined && site.estimate === undefined) {
+    throw new InputProblem([usage('--load METER-FILE, or a site file with an estimate', 'none')]);
+  }
+  if (load === undefined) needNoReading(line);
   if (kind === 'assess') await inFile(line.operand, async () => needBank(site));
-  const { record } = await readMeterRecord(line, load, site.timeZone);
-  const zone = zoneTableOf(site.timeZone, record);
-  const outcome = withRobustness(judge(site, record, zone));
+  const told =
+    load === undefined
+      ? await inFile(line.operand, async () => byEstimate(site, kind, judges))
+      : byRecord(site, kind, judges, (await readMeterRecord(line, load, site.timeZone)).record);
   await nextTurn(); // an interruption that came meanwhile is heard here
-  const told: Outcome = { ...outcome, result: putInWords(outcome.result) };
   if (target !== null) {
-    const contentHash = sha256([
-      planContent({ kind, site, recordHash: sha256(recordBytes(record)), zone, engineVersion: ENGINE_VERSION }),
-    ]);
-    await target.write(await proposalOf(told, contentHash));
+    await target.write(await proposalOf(told));
     say(`proposal written to ${pdf}`);
   }
-  if (line.flags.has('json')) await writeJson(told.result);
-  else await write(resultReport(told));
-  return told.result.verdict === 'avoid' ? EXIT.avoid : EXIT.done;
+  const { result } = told.outcome;
+  if (line.flags.has('json')) await writeJson(result);
+  else await write(told.report);
+  return result.verdict === 'avoid' ? EXIT.avoid : EXIT.done;
+}
+
+function byRecord(site: Site, kind: Outcome['kind'], judges: Judges, record: LoadRecord): Told {
+  const zone = zoneTableOf(site.timeZone, record);
+  const computed = withRobustness(judges.record(site, record, zone));
+  const outcome: Outcome = { ...computed, result: putInWords(computed.result) };
+  const contentHash = contentHashOf({ kind, site, recordHash: sha256(recordBytes(record)), zone });
+  return { outcome, report: resultReport(outcome), contentHash };
+}
+
+function byEstimate(site: Site, kind: Outcome['kind'], judges: Judges): Told {
+  const zone = estimateZone(site);
+  const computed = withRobustness(judges.estimate(site, zone));
+  const outcome: EstimateOutcome = { ...computed, result: putEstimateInWords(computed.result) };
+  return {
+    outcome,
+    report: estimateReport(outcome),
+    contentHash: contentHashOf({ kind, site, recordHash: null, zone }),
+  };
+}
+
+function contentHashOf(inputs: Omit<PlanInputs, 'engineVersion'>): string {
+  return sha256([planContent({ ...inputs, engineVersion: ENGINE_VERSION })]);
+}
+
+/** What says how a meter file is read has nothing to read. */
+function needNoReading({ values }: CommandLine): void {
+  const idle = ['format', 'map', 'time-zone'].filter((name) => values.has(name));
+  if (idle.length === 0) return;
+  throw new InputProblem(idle.map((name) => usage(`--load METER-FILE beside --${name}`, 'none')));
 }
 
 function needBank(site: Site): void {
@@ -65,7 +110,7 @@ function needBank(site: Site): void {
 }
 
 /** The drawing of papers is loaded only where one is wanted. */
-async function proposalOf(outcome: Outcome, contentHash: string): Promise<Uint8Array> {
+async function proposalOf({ outcome, contentHash }: Told): Promise<Uint8Array> {
   const { renderProposal } = await import('#libs/proposal/render-proposal.js');
   return renderProposal(outcome, {
     number: contentHash.slice(0, 8),

@@ -2,7 +2,7 @@ import { EXIT } from '#libs/contract/error-body.js';
 import { InputProblem, summarizeRecord } from '#libs/engine/index.js';
 import { recordColumns } from '#libs/meter-files/record-columns.js';
 import { recordCsvChunks } from '#libs/meter-files/write-record-csv.js';
-import { recordInWords } from '#libs/present/put-in-words.js';
+import { qualityInWords, recordInWords } from '#libs/present/put-in-words.js';
 import { recordReport } from '#libs/present/terminal-report.js';
 import type { CommandLine } from './command.js';
 import { usage } from './command-line.js';
@@ -15,7 +15,8 @@ export async function run(line: CommandLine): Promise<number> {
   if (flags.has('csv') && (flags.has('json') || flags.has('intervals'))) {
     throw new InputProblem([usage('--csv alone', 'it beside --json or --intervals')]);
   }
-  const { record, quality } = await readMeterRecord(line, line.operand);
+  const { record, quality: stated } = await readMeterRecord(line, line.operand);
+  const quality = qualityInWords(stated);
   const summary = recordInWords(summarizeRecord(record));
   if (flags.has('csv')) {
     for (const chunk of recordCsvChunks(record)) await write(chunk);
@@ -24,7 +25,7 @@ export async function run(line: CommandLine): Promise<number> {
   } else if (flags.has('json')) {
     await writeJson({ record: summary, quality });
   } else {
-    await write(recordReport(summary));
+    await write(recordReport(summary, quality));
   }
   return EXIT.done;
 }

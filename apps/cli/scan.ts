@@ -1,7 +1,7 @@
 import { EXIT } from '#libs/contract/error-body.js';
 import { readSiteWithMathjs } from '#libs/contract/read-site-with-mathjs.js';
 import { InputProblem, scanSite, siteNetlist } from '#libs/engine/index.js';
-import { scanReport } from '#libs/present/terminal-report.js';
+import { scanReport } from '#libs/present/scan-report.js';
 import type { CommandLine } from './command.js';
 import { usage } from './command-line.js';
 import { readJson } from './input-file.js';

@@ -48,8 +48,8 @@ const revisionHead = {
   author: nullable(text),
   reason: nullable(text),
   proposed: text,
-  recordId: text,
-  recordHash: text,
+  recordId: nullable(text),
+  recordHash: nullable(text),
   engineVersion: text,
   contentHash: text,
   links: open,
@@ -70,6 +70,7 @@ export const ANSWER_SCHEMAS: Record<string, object> = {
   StoredSite: objectOf({ ...siteHead, site: schemaOf('Site') }),
   LoadRecord: objectOf({
     ...{ id: text, siteId: text, hash: text, createdAt: moment, record: open, quality: open },
+    againstSupply: { type: 'array', items: open },
     ...{ revision: whole, previousId: nullable(text) },
     file: objectOf({ name: nullable(text), sha256: text, bytes: whole, header: nullable(text) }),
   }),

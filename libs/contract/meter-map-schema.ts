@@ -1,5 +1,5 @@
 import * as z from 'zod';
-import { METER_COLUMNS, METER_UNITS, type MeterMap } from './meter-map.js';
+import { METER_COLUMNS, METER_UNITS, type MeterMap, POWER_FACTOR_SIGNS, UNIT_COLUMNS } from './meter-map.js';
 import { label, plain, POSITIVE, quantity, whole } from './schema-parts.js';
 import { readBySchema } from './schema-problems.js';
 import { isTimeZone } from './time-zone.js';
@@ -15,18 +15,8 @@ export const meterMapSchema = z
     separator: z.enum([',', ';', '\t', '|']).optional(),
     decimal: z.enum(['.', ',']).optional(),
     headerRow: whole(0, 1000).optional(),
-    columns: z.partialRecord(z.enum(METER_COLUMNS), column).optional(),
-    units: z
-      .strictObject({
-        active: unit.optional(),
-        exported: unit.optional(),
-        reactive: unit.optional(),
-        lagging: unit.optional(),
-        leading: unit.optional(),
-        voltage: unit.optional(),
-        connected: unit.optional(),
-      })
-      .optional(),
+    columns: z.partialRecord(z.enum(METER_COLUMNS), z.union([column, z.array(column).length(3)])).optional(),
+    units: z.partialRecord(z.enum(UNIT_COLUMNS), unit).optional(),
     quantity: z.enum(['power', 'energy']).optional(),
     sign: z.enum(['laggingPositive', 'leadingPositive']).optional(),
     stamp: z.enum(['begin', 'end']).optional(),
@@ -36,6 +26,11 @@ export const meterMapSchema = z
     multiplier: plain(POSITIVE).optional(),
     repair: z.enum(['none', 'hold', 'interpolate', 'typicalDay']).optional(),
     upToS: quantity('upToS', { min: 0 }).optional(),
+    energy: z.enum(['interval', 'register']).optional(),
+    powerFactorSign: z.enum(POWER_FACTOR_SIGNS).optional(),
+    voltageBetween: z.enum(['lineToLine', 'lineToNeutral']).optional(),
+    quality: z.record(label(40), z.enum(['measured', 'estimated', 'missing'])).optional(),
+    dayColumns: z.enum(['clock', 'elapsed']).optional(),
     keepRow: z.enum(['first', 'last']).optional(),
     overlap: z.enum(['earlier', 'later']).optional(),
   })

@@ -1,4 +1,7 @@
-/** Names of the columns a map may choose; `date` and `clock` together stand for `time`. */
+/**
+ * Names of the columns a map may choose; `date` and `clock` together stand for `time`. Apparent power, power factor and
+ * current give kW and kvar where the file has none; `meter` names the meter of each row, `quality` its status.
+ */
 export const METER_COLUMNS = [
   'time',
   'date',
@@ -11,6 +14,11 @@ export const METER_COLUMNS = [
   'voltage',
   'connected',
   'standby',
+  'apparent',
+  'powerFactor',
+  'current',
+  'meter',
+  'quality',
 ] as const;
 
 export type MeterColumn = (typeof METER_COLUMNS)[number];
@@ -29,14 +37,48 @@ export const METER_UNITS = [
   'varh',
   'kvarh',
   'Mvarh',
+  'VA',
+  'kVA',
+  'MVA',
+  'VAh',
+  'kVAh',
+  'MVAh',
   'V',
   'kV',
+  'A',
 ] as const;
 
 export type MeterUnit = (typeof METER_UNITS)[number];
 
+/** What a negative power factor says: which kvar the interval has, or which way its kW flow. */
+export const POWER_FACTOR_SIGNS = ['negativeLeads', 'negativeLags', 'negativeExports'] as const;
+
+export type PowerFactorSign = (typeof POWER_FACTOR_SIGNS)[number];
+
+/** Between which conductors a voltage is measured. */
+export type VoltageBetween = 'lineToLine' | 'lineToNeutral';
+
+/** What a letter or word in a column of qualities says of its row. */
+export type QualityMeaning = 'measured' | 'estimated' | 'missing';
+
 /** How missing intervals are filled; only where it is asked for. */
 export type MeterRepair = 'none' | 'hold' | 'interpolate' | 'typicalDay';
+
+/** Columns whose unit a map may state. */
+export const UNIT_COLUMNS = [
+  'active',
+  'exported',
+  'reactive',
+  'lagging',
+  'leading',
+  'voltage',
+  'connected',
+  'apparent',
+  'current',
+] as const;
+
+/** A column by its number counted from 1, or by its name in the header row. */
+export type ColumnName = number | string;
 
 /**
  * What a person says about a meter file, in answer to a question or ahead of one; what is left out the reader finds out.
@@ -51,11 +93,9 @@ export interface MeterMap {
   decimal?: '.' | ',';
   /** row of the column names, counted from 1; 0 where the file has none */
   headerRow?: number;
-  /** each column as its number counted from 1, or as its name in the header row */
-  columns?: Partial<Record<MeterColumn, number | string>>;
-  units?: Partial<
-    Record<'active' | 'exported' | 'reactive' | 'lagging' | 'leading' | 'voltage' | 'connected', MeterUnit>
-  >;
+  /** each column as its number counted from 1, or as its name in the header row; a list of three is a column a phase */
+  columns?: Partial<Record<MeterColumn, ColumnName | readonly ColumnName[]>>;
+  units?: Partial<Record<(typeof UNIT_COLUMNS)[number], MeterUnit>>;
   /** what columns without a unit of their own hold: means in kW and kvar, or energies in kWh and kvarh */
   quantity?: 'power' | 'energy';
   /** which sign of a signed reactive column is lagging */
@@ -73,6 +113,16 @@ export interface MeterMap {
   repair?: MeterRepair;
   /** longest gap that is repaired [s] */
   upToS?: number;
+  /** what columns of energy hold: the energy of each interval, or the reading of a register that only rises */
+  energy?: 'interval' | 'register';
+  /** what a negative power factor says */
+  powerFactorSign?: PowerFactorSign;
+  /** what voltages are measured between */
+  voltageBetween?: VoltageBetween;
+  /** meaning of the letters or words in the quality columns */
+  quality?: Record<string, QualityMeaning>;
+  /** in a file of one row a day: whether its columns follow the clock or the time since midnight where clocks change */
+  dayColumns?: 'clock' | 'elapsed';
   /** which of several rows with one stamp and different values counts */
   keepRow?: 'first' | 'last';
   /** which counts where a file that extends a record disagrees with it: the record as it stands, or the file */

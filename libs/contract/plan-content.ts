@@ -6,8 +6,8 @@ export interface PlanInputs {
   kind: 'plan' | 'assess';
   /** the site as given, validated, `asOf` frozen */
   site: Site;
-  /** SHA-256 of the record's bytes, 64 hexadecimal digits */
-  recordHash: string;
+  /** SHA-256 of the record's bytes, 64 hexadecimal digits; null where the site's own estimate stands in for one */
+  recordHash: string | null;
   /** the table of offsets that was used */
   zone: ZoneTable;
   engineVersion: string;

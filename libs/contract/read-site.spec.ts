@@ -165,7 +165,7 @@ const refused: [why: string, json: unknown, path: string | undefined, code: stri
     'loads.dampingKw.min',
     'inconsistent',
   ],
-  ['bills in place of a record', siteWith({ estimate: { bills: [] } }), 'estimate', 'not-supported-yet'],
+  ['an empty list of bills', siteWith({ estimate: { bills: [] } }), 'estimate.bills', 'out-of-range'],
   ['class 4', siteWith({ limits: { emcClass: 4 } }), 'limits.emcClass', 'out-of-range'],
   ['control characters in a name', siteWith({ name: 'a\u0007b' }), 'name', 'out-of-range'],
   ['half a character in a name', siteWith({ name: 'a\ud800b' }), 'name', 'out-of-range'],
@@ -287,7 +287,7 @@ describe('a site file', () => {
   });
 
   it('has a schema that says what the engine’s type says', () => {
-    type InForms = 'supply' | 'bank' | 'network'; // these may stand in other forms, which understandSite makes one
+    type InForms = 'supply' | 'bank' | 'network' | 'estimate'; // these may stand in other forms, which understandSite makes one
     expectTypeOf<Omit<SiteGiven, InForms>>().toExtend<Omit<Site, InForms>>();
     expectTypeOf<Omit<Site, 'understood'>>().toExtend<SiteGiven>();
   });

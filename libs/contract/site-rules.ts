@@ -1,4 +1,5 @@
 import { LIMIT_EDITIONS } from '#libs/engine/index.js';
+import { estimateRules } from './estimate-rules.js';
 import { networkRules } from './network-rules.js';
 import { listAt, numberAt, partAt, type Readable, type RuleBreach, repeatsIn, textAt } from './rule-breach.js';
 import { shown } from './shown.js';
@@ -19,6 +20,7 @@ export function siteRules(site: Readable): RuleBreach[] {
     ...supplyRules(site),
     ...transformerRules(site),
     ...loadRules(site),
+    ...estimateRules(site),
     ...stateRules(site),
     ...priceRules(site),
     ...tariffRules(partAt(site, 'tariff')).map((breach) => ({ ...breach, path: ['tariff', ...breach.path] })),
@@ -150,11 +152,6 @@ function stateRules(site: Readable): RuleBreach[] {
     const expected =
       '"none", "out", "fixed", "logged" or "unknown": a switching bank cannot be taken out of a record yet';
     breaches.push({ code: 'not-supported-yet', path: ['recordedBank', 'state'], expected, found: '"switching"' });
-  }
-  const estimate = partAt(site, 'estimate');
-  if (estimate !== undefined) {
-    const expected = 'a meter file: bills and equipment lists are not worked out yet';
-    breaches.push({ code: 'not-supported-yet', path: ['estimate'], expected, found: shown(estimate) });
   }
   return breaches;
 }

@@ -2,6 +2,7 @@ import * as z from 'zod';
 import { SPECTRUM_NAMES } from '#libs/engine/index.js';
 import { bankSchema } from './bank-schema.js';
 import { catalogueSchema } from './catalogue-schema.js';
+import { estimateSchema } from './estimate-schema.js';
 import { financeSchema } from './finance-schema.js';
 import { limitsSchema } from './limits-schema.js';
 import { networkSchema } from './network-schema.js';
@@ -143,7 +144,7 @@ export const siteSchema = z
     prices: pricesSchema.optional(),
     catalogue: catalogueSchema.optional(),
     finance: financeSchema.optional(),
-    estimate: z.unknown().optional(),
+    estimate: estimateSchema.optional(),
   })
   .check(rules)
   .meta({ id: 'Site' });

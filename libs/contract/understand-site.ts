@@ -3,15 +3,19 @@ import {
   CABLE_REACTANCE_OHM_PER_KM,
   type CableInput,
   conductorOhmPerKm,
+  type EstimateInput,
   faultLevelOfKa,
   faultLevelOfOhm,
+  type MonthlyBill,
   type NetworkInput,
   reactorPctOfTuned,
   type Site,
   type StageGroupInput,
   type SupplyInput,
+  tanFromPowerFactor,
   type Understood,
 } from '#libs/engine/index.js';
+import { partAt } from './rule-breach.js';
 import type { SiteGiven } from './site-schema.js';
 
 type GivenStage = NonNullable<SiteGiven['bank']>['stages'][number];
@@ -25,12 +29,13 @@ type GivenNetwork = NonNullable<SiteGiven['network']>;
  */
 export function understandSite(given: SiteGiven, json: unknown): Site {
   const said = new Said(given.frequencyHz);
-  const { bank, network, supply, ...rest } = given;
+  const { bank, network, supply, estimate, ...rest } = given;
   const site: Site = { ...rest, supply: said.supply(supply) };
   if (bank !== undefined) {
     site.bank = { ...bank, stages: bank.stages.map((stage, g) => said.stage(stage, `bank.stages[${g}]`)) };
   }
   if (network !== undefined) site.network = said.network(network, json);
+  if (estimate !== undefined) site.estimate = said.estimate(estimate, json);
   if (said.list.length > 0) site.understood = said.list;
   return site;
 }
@@ -86,10 +91,29 @@ class Said {
     return stage;
   }
 
+  estimate({ bills, equipment }: NonNullable<SiteGiven['estimate']>, json: unknown): EstimateInput {
+    for (const [i, { ratedKw }] of (equipment ?? []).entries()) {
+      this.#horsepower(json, ['estimate', 'equipment', i, 'ratedKw'], ratedKw);
+    }
+    return {
+      ...(bills === undefined ? {} : { bills: bills.map((bill, k) => this.#bill(bill, `estimate.bills[${k}]`)) }),
+      ...(equipment === undefined ? {} : { equipment }),
+    };
+  }
+
+  #bill(
+    { powerFactor, laggingKvarh, ...bill }: NonNullable<NonNullable<SiteGiven['estimate']>['bills']>[number],
+    path: string,
+  ): MonthlyBill {
+    if (laggingKvarh !== undefined) return { ...bill, laggingKvarh };
+    const kvarh = bill.activeKwh * tanFromPowerFactor(powerFactor!);
+    return { ...bill, laggingKvarh: this.#say(`${path}.powerFactor`, `${powerFactor}`, kvarh, 'kvarh') };
+  }
+
   network(given: GivenNetwork, json: unknown): NetworkInput {
     const { cables, capacitors, ...rest } = given;
     for (const list of ['motors', 'resistive'] as const) {
-      for (const [i, { kw }] of (given[list] ?? []).entries()) this.#horsepower(json, [list, i], kw);
+      for (const [i, { kw }] of (given[list] ?? []).entries()) this.#horsepower(json, ['network', list, i, 'kw'], kw);
     }
     return {
       ...rest,
@@ -100,10 +124,10 @@ class Said {
     };
   }
 
-  #horsepower(json: unknown, [list, index]: ['motors' | 'resistive', number], kw: number): void {
-    const entry = (json as { network: Record<string, { kw: unknown }[]> }).network[list]?.[index]?.kw;
+  #horsepower(json: unknown, [part, list, index, key]: [string, string, number, string], kw: number): void {
+    const entry = partAt(json, part, list, index, key);
     if (typeof entry === 'string' && /hp\s*$/.test(entry))
-      this.#say(`network.${list}[${index}].kw`, entry.trim(), kw, 'kW');
+      this.#say(`${part}.${list}[${index}].${key}`, entry.trim(), kw, 'kW');
   }
 
   #cable(given: NonNullable<GivenNetwork['cables']>[number], path: string): CableInput {

@@ -5,6 +5,8 @@ import type { MeterFormat } from './meter-format.js';
 import { isMscons, readMscons } from './mscons/read-mscons.js';
 import { isNem12 } from './nem12/nem12-records.js';
 import { readNem12 } from './nem12/read-nem12.js';
+import { isQuadrantRows } from './quadrant-rows/quadrant-line.js';
+import { readQuadrantRows } from './quadrant-rows/read-quadrant-rows.js';
 import { isProfileReadout, readProfileReadout } from './profile-readout/read-profile-readout.js';
 import { isParquet, readParquet } from './parquet/read-parquet.js';
 import { isXlsx, readXlsx } from './xlsx/read-xlsx.js';
@@ -18,6 +20,16 @@ export const FORMATS: readonly MeterFormat[] = [
     described: ['AEMO, Meter Data File Format Specification NEM12 & NEM13, version 1.06, 1 December 2017'],
     recognises: isNem12,
     read: readNem12,
+  },
+  {
+    name: 'quadrant-rows',
+    title: 'Quarter-hour rows by quadrant with a season flag',
+    described: [
+      'IEC 62053-23, annex on the geometric representation of active and reactive power (the four quadrants)',
+      'IEC 62056-6-1, value group C, 1 and 2 (active energy), 5 to 8 (reactive energy of quadrants I to IV)',
+    ],
+    recognises: isQuadrantRows,
+    read: readQuadrantRows,
   },
   {
     name: 'mscons',

@@ -25,6 +25,19 @@ describe('the header of a meter file', () => {
     expect(await headerText(streamOf(utf16))).toBe('time,p,q');
   });
 
+  it('is read without keeping the file open', async () => {
+    let closed = false;
+    async function* source() {
+      try {
+        for (;;) yield new TextEncoder().encode(lines('Time,P,Q', ...DATA));
+      } finally {
+        closed = true;
+      }
+    }
+    expect(await headerText(source())).toBe('time,p,q');
+    expect(closed).toBe(true);
+  });
+
   it.each([
     ['data from the first row on', DATA],
     ['no data', ['Time,P,Q']],

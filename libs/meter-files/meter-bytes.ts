@@ -13,19 +13,20 @@ export class MeterBytes {
   /** the first bytes, at most 64 KiB, without a byte order mark */
   readonly head: Uint8Array;
   readonly encoding: Encoding;
-  /** share of the work that reading the bytes is; less than 1 where most of it comes after the last byte */
-  readonly #share: { of: number };
+  readonly #progress: Progress;
   readonly #chunks: AsyncGenerator<Uint8Array>;
+  readonly #raw: AsyncGenerator<Uint8Array>;
 
   private constructor(
     head: Uint8Array,
     encoding: Encoding,
-    source: { chunks: AsyncGenerator<Uint8Array>; share: { of: number } },
+    source: { chunks: AsyncGenerator<Uint8Array>; raw: AsyncGenerator<Uint8Array>; progress: Progress },
   ) {
     this.head = head.subarray(0, HEAD_BYTES);
     this.encoding = encoding;
     this.#chunks = source.chunks;
-    this.#share = source.share;
+    this.#raw = source.raw;
+    this.#progress = source.progress;
   }
 
   /**
@@ -38,17 +39,17 @@ export class MeterBytes {
     source: AsyncIterable<Uint8Array>,
     options: { watch?: Watch; sizeBytes?: number } = {},
   ): Promise<MeterBytes> {
-    const share = { of: 1 };
-    const raw = watched(source, options, share);
+    const progress: Progress = { share: null, watch: options.watch };
+    const raw = watched(source, progress, options.sizeBytes);
     const start = await firstOf(raw);
     const encoding = isBinary(start) ? 'utf-8' : encodingOf(start);
     if (encoding === 'utf-8') {
       const head = withoutMark(start);
-      return new MeterBytes(head, encoding, { chunks: again(head, raw), share });
+      return new MeterBytes(head, encoding, { chunks: again(head, raw), raw, progress });
     }
     const decoded = decodedChunks(again(start, raw), encoding);
     const head = (await decoded.next()).value ?? new Uint8Array(0);
-    return new MeterBytes(head, encoding, { chunks: again(head, decoded), share });
+    return new MeterBytes(head, encoding, { chunks: again(head, decoded), raw, progress });
   }
 
   /**
@@ -56,7 +57,7 @@ export class MeterBytes {
    * @param share of the whole work, 0 … 1
    */
   isShareOfWork(share: number): void {
-    this.#share.of = share;
+    this.#progress.share = share;
   }
 
   /**
@@ -64,29 +65,40 @@ export class MeterBytes {
    * @returns bytes, or null at the end of the file
    */
   async next(): Promise<Uint8Array | null> {
+    this.#progress.share ??= 1;
     const step = await this.#chunks.next();
-    return step.done ? null : step.value;
+    if (!step.done) return step.value;
+    this.#progress.watch?.report(this.#progress.share);
+    return null;
   }
 
   /** Lets the source close what it holds, where reading ends before its end. */
   async close(): Promise<void> {
     await this.#chunks.return(undefined);
+    // Chunks that were never asked for have not begun, so that their end does not reach the source.
+    await this.#raw.return(undefined);
   }
+}
+
+/** Who hears of the progress, and the share of the work that reading the bytes is, once the format is known. */
+interface Progress {
+  share: number | null;
+  watch: Watch | undefined;
 }
 
 async function* watched(
   source: AsyncIterable<Uint8Array>,
-  { watch, sizeBytes }: { watch?: Watch; sizeBytes?: number },
-  share: { of: number },
+  progress: Progress,
+  sizeBytes: number | undefined,
 ): AsyncGenerator<Uint8Array> {
+  const { watch } = progress;
   let readBytes = 0;
   for await (const chunk of source) {
     if (watch?.stopped()) throw new Stopped('the reading was stopped');
     yield chunk;
     readBytes += chunk.length;
-    if (sizeBytes) watch?.report(share.of * Math.min(1, readBytes / sizeBytes));
+    if (sizeBytes && progress.share !== null) watch?.report(progress.share * Math.min(1, readBytes / sizeBytes));
   }
-  watch?.report(share.of);
 }
 
 async function firstOf(raw: AsyncGenerator<Uint8Array>): Promise<Uint8Array> {
@@ -95,7 +107,8 @@ async function firstOf(raw: AsyncGenerator<Uint8Array>): Promise<Uint8Array> {
   while (size < HEAD_BYTES) {
     const step = await raw.next();
     if (step.done) break;
-    chunks.push(step.value.slice());
+    // a copy: `slice` of a Buffer would share its memory
+    chunks.push(new Uint8Array(step.value));
     size += step.value.length;
   }
   const all = new Uint8Array(size);

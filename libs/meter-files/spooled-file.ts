@@ -43,7 +43,7 @@ export class SpooledFile {
           handle = await openTemporary();
           for (const part of parts.splice(0)) await handle.appendFile(part);
         }
-        if (handle === null) parts.push(chunk.slice());
+        if (handle === null) parts.push(new Uint8Array(chunk));
         else await handle.appendFile(chunk);
         sizeBytes += chunk.length;
       }

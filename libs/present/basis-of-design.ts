@@ -1,4 +1,4 @@
-import type { Outcome, RuleSet } from '#libs/engine/index.js';
+import type { BankOutcome, RuleSet } from '#libs/engine/index.js';
 
 /** A document the plan rests on. */
 export interface Basis {
@@ -30,7 +30,7 @@ const ALSO: Record<string, string[]> = { 'IEC 60831-1:2014': ['discharge', 'cond
  * @param outcome the plan or judgement
  * @returns rows in the order of the duties
  */
-export function basisOfDesign(outcome: Outcome): Basis[] {
+export function basisOfDesign(outcome: BankOutcome): Basis[] {
   const { duties } = outcome.result;
   const bySource = new Map<string, Set<string>>();
   for (const { source, name } of duties) {

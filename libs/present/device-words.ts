@@ -1,4 +1,4 @@
-import type { DeviceName, DeviceRow, DeviceState, Outcome } from '#libs/engine/index.js';
+import type { DeviceName, DeviceRow, DeviceState, BankOutcome } from '#libs/engine/index.js';
 import { formatNumber, formatQuantity, GAP } from './format-number.js';
 
 /** How a device stands, as a person reads it. */
@@ -159,7 +159,7 @@ export interface DeviceWords {
  * @param outcome the plan or judgement
  * @returns one entry a row, in the engine's order
  */
-export function deviceTable({ result }: Outcome): DeviceWords[] {
+export function deviceTable({ result }: BankOutcome): DeviceWords[] {
   const groups = new Set(result.devices.flatMap(({ group }) => (group === null ? [] : [group])));
   return result.devices.map((row) => deviceWords(row, groups.size > 1));
 }

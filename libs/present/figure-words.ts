@@ -5,6 +5,11 @@ import { formatNumber, GAP, MINUS } from './format-number.js';
 const LABELS: Readonly<Record<string, string>> = {
   'record.powerFactorLagging': 'power factor of the record, lagging kvarh only',
   'record.powerFactorNet': 'power factor of the record, leading kvarh taken off',
+  'estimate.months[*].lowerKvar': 'lower bound of the need, estimated',
+  'estimate.months[*].upperKvar': 'upper bound of the need, estimated',
+  'estimate.equipment.rows[*].activeKw': 'active power, estimated',
+  'estimate.equipment.rows[*].reactiveKvar': 'reactive power, estimated',
+  'estimate.equipment.neededKvar': 'need of the equipment list, estimated',
   'requirement.maxKvar': 'greatest need',
   'requirement.p99Kvar': 'need passed in 1 % of the record',
   'network.shortCircuitMva.sourceMohm': 'reactance of the supply at the greatest fault level',
@@ -70,7 +75,12 @@ export function labelOf(id: string, duties: readonly Duty[]): string {
   }
   const label = LABELS[id.replace(/\[\d+\]/, '[*]')];
   if (label === undefined) return id;
-  return place === null ? label : `${label}, group${GAP}${at + 1}`;
+  return place === null ? label : `${label}, ${placeWord(id)}${GAP}${at + 1}`;
+}
+
+function placeWord(id: string): string {
+  if (id.startsWith('estimate.months')) return 'bill';
+  return id.startsWith('estimate.equipment') ? 'entry' : 'group';
 }
 
 /**

@@ -1,4 +1,4 @@
-import type { Duty, Outcome, Remark } from '#libs/engine/index.js';
+import type { Duty, EstimateOutcome, Outcome, Remark } from '#libs/engine/index.js';
 import { dutyName } from './figure-words.js';
 import { formatApart, formatQuantity, GAP } from './format-number.js';
 import { FINDING_LEVELS, type FindingLevel } from './message.js';
@@ -20,12 +20,11 @@ export interface Finding {
  * @param outcome the plan or judgement
  * @returns findings in the order of their four levels
  */
-export function findings(outcome: Outcome): Finding[] {
-  const { result } = outcome;
+export function findings({ result }: Outcome | EstimateOutcome): Finding[] {
   const all = [
     ...result.reasons.map(remarkFinding),
     ...notJudgedFinding(result.duties),
-    ...result.record.notes.map(remarkFinding),
+    ...(result.record?.notes ?? []).map(remarkFinding),
   ];
   return FINDING_LEVELS.flatMap((level) => all.filter((finding) => finding.level === level));
 }

@@ -5,7 +5,7 @@ import {
   type CornerCase,
   networkModel,
   networkTable,
-  type Outcome,
+  type BankOutcome,
   PeakFinder,
   stageAdmittance,
   stageBranch,
@@ -50,7 +50,7 @@ export interface ImpedanceFigure {
  * @param name what the bank is, for example "7 % reactors"
  * @returns the figure with its own scale
  */
-export function impedanceOverOrder(outcome: Outcome, bank: Bank, name: string): ImpedanceFigure {
+export function impedanceOverOrder(outcome: BankOutcome, bank: Bank, name: string): ImpedanceFigure {
   const present = presentOrdersH(outcome);
   const peakH = outcome.result.network.levels.findLast((level) => level.case === 'nominal')?.parallelOrderH ?? 0;
   const endH = Math.min(50, Math.max(LEAST_END_H, Math.ceil(peakH) + 1, ...present.map((order) => order + 2)));
@@ -65,12 +65,12 @@ export function impedanceOverOrder(outcome: Outcome, bank: Bank, name: string): 
 }
 
 /** Orders that some load or the supply brings. */
-function presentOrdersH(outcome: Outcome): number[] {
+function presentOrdersH(outcome: BankOutcome): number[] {
   const orders = outcome.result.network.levels[0]?.orders ?? [];
   return orders.map(({ orderH }) => orderH);
 }
 
-function scanBank(outcome: Outcome, bank: Bank, endH: number): Scan {
+function scanBank(outcome: BankOutcome, bank: Bank, endH: number): Scan {
   const { supply, loads, nominalV } = outcome.site;
   const count = Math.round((endH - 1) / STEP_H) + 1;
   const ordersH = Float64Array.from({ length: count }, (_, i) => 1 + i * STEP_H);
@@ -93,7 +93,7 @@ function scanBank(outcome: Outcome, bank: Bank, endH: number): Scan {
 type PeakOf = (levelKvar: number, vector: Int32Array) => Scan['levels'][number]['peak'];
 
 /** The outcome has its own bank's peaks already. */
-function knownPeaks(outcome: Outcome): PeakOf {
+function knownPeaks(outcome: BankOutcome): PeakOf {
   const nominal = outcome.result.network.levels.filter((level) => level.case === 'nominal');
   return (levelKvar) => {
     const level = nominal.find((one) => Math.abs(one.levelKvar - levelKvar) < 1e-6);

@@ -48,6 +48,16 @@ export function formatClock(secondOfDay: number): string {
 }
 
 /**
+ * A date for people.
+ * @param date "2018-11-22"
+ * @returns "22 Nov 2018"
+ */
+export function formatDate(date: string): string {
+  const [year = '', month = '', day = ''] = date.split('-');
+  return `${Number(day)}${GAP}${MONTHS[Number(month) - 1] ?? month}${GAP}${year}`;
+}
+
+/**
  * A month's name for people.
  * @param month "2018-01"
  * @returns "Jan 2018"

@@ -1,8 +1,10 @@
 import { ASSUMPTION_MESSAGES } from './assumption-messages.js';
 import { CAUTION_MESSAGES } from './caution-messages.js';
+import { ESTIMATE_MESSAGES } from './estimate-messages.js';
 import type { Messages } from './message.js';
 import { MONEY_MESSAGES } from './money-messages.js';
 import { NOTE_MESSAGES } from './note-messages.js';
+import { RECORD_MESSAGES } from './record-messages.js';
 import { REASON_MESSAGES } from './reason-messages.js';
 
 /** One sentence for every code of a remark. */
@@ -12,4 +14,6 @@ export const MESSAGES: Messages = {
   ...CAUTION_MESSAGES,
   ...NOTE_MESSAGES,
   ...MONEY_MESSAGES,
+  ...RECORD_MESSAGES,
+  ...ESTIMATE_MESSAGES,
 };

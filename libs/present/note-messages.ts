@@ -20,6 +20,7 @@ export const NOTE_MESSAGES: Messages = {
   'decimal-mark-settled': told('The decimal mark is “{mark}”; every other reading fails.'),
   'thousands-divided': told('{numbers:number has|numbers have} a mark between thousands.'),
   'date-order-settled': told('Dates are in the order {order}; every other reading fails.'),
+  'serial-dates': told('Stamps are a spreadsheet’s serial dates, counted from 1900 and rounded to the second.'),
   'rows-newest-first': told('The rows stand newest first; {rows:row was|rows were} turned round.'),
   'rows-put-in-order': noted(
     '{rows:row stood|rows stood} out of order and were put in place.',
@@ -38,6 +39,24 @@ export const NOTE_MESSAGES: Messages = {
     '{intervals:interval has|intervals have} no value and were left out.',
     'Missing is not zero; find out why.',
   ),
+  'values-estimated': noted(
+    '{rows:row is|rows are} marked as estimated or substituted; they were kept.',
+    'They are not measured.',
+  ),
+  'values-flagged-missing': noted(
+    '{rows:row is|rows are} marked as missing or invalid and were left out.',
+    'Missing is not zero; find out why.',
+  ),
+  'qualities-unknown': noted(
+    '{rows:row is|rows are} marked {codes}, which is not understood; the values were kept.',
+    'Ask what it means, and say it in the map.',
+  ),
+  'quality-not-read': noted(
+    'Columns called a status hold numbers that are not understood and were passed over: {columns}.',
+    'See whether they mark values that should not count.',
+  ),
+  'days-in-columns': told('The file has a row a day; the intervals of a day stand in {columns} columns.'),
+  'meter-chosen': told('Meter {meter} was read, as asked; {others:other meter was|other meters were} left out.'),
   'zone-assumed-utc': noted(
     'No zone was given, so stamps were taken as UTC.',
     'Give the zone: days and months depend on it.',
@@ -74,12 +93,34 @@ export const NOTE_MESSAGES: Messages = {
     'Lagging kvar were taken as {lagging}; {negative:value is|values are} negative.',
     'See that the sign is so.',
   ),
-  'reactive-never-leading': told('The signed reactive column is nowhere negative; all of it was taken as lagging.'),
+  'reactive-never-leading': noted(
+    'The reactive column is nowhere negative; all of it was taken as lagging.',
+    'If the meter writes kvar without their sign, over-correction in the record would not show.',
+    'information',
+  ),
+  'reactive-unsigned': noted(
+    'The file gives kvar only as a size without a sign; all of it was taken as lagging.',
+    'Over-correction in the record would not show.',
+  ),
+  'powers-worked-out': noted(
+    'Active or reactive power was worked out from {columns}.',
+    'Near a power factor of 1 small errors of these columns are large errors of the kvar.',
+  ),
+  'power-factor-in-percent': told('The power factor is written in percent and was divided by 100.'),
+  'power-factor-sign-taken': told('The sign of the power factor was read as: {sign}.', 'See that it is so.'),
+  'phases-added': told('Columns of the three phases were added: {columns}.'),
+  'registers-differenced': told(
+    'Columns hold the readings of registers; the energy of an interval is the difference of two: {columns}.',
+  ),
+  'voltage-to-line-to-line': told('Voltage ({column}) is line to neutral; it was multiplied by √3.'),
   'export-subtracted': told('Exported power ({column}) was subtracted from imported.'),
   'voltage-taken-line-to-line': noted('Voltage ({column}) was taken as line to line.', 'See that it is of that size.'),
   'intervals-repaired': noted(
     '{intervals:interval was|intervals were} filled by {method}, as asked.',
     'They are not measured.',
+  ),
+  'quadrants-added': told(
+    'Reactive energy of quadrants I and II was added as lagging, of III and IV as leading; exported energy was subtracted.',
   ),
   'channels-added': told('Channels {channels} were added up as {quantity}.'),
   'channels-left-out': told(

@@ -1,4 +1,4 @@
-import type { Outcome, StageGroup } from '#libs/engine/index.js';
+import type { BankOutcome, EstimateOutcome, Outcome, StageGroup } from '#libs/engine/index.js';
 import { countWord } from './findings.js';
 import { formatNumber, formatQuantity, GAP } from './format-number.js';
 
@@ -8,15 +8,29 @@ import { formatNumber, formatQuantity, GAP } from './format-number.js';
  * @returns "eight stages, 261 kvar at 400 V, with 7 % reactors."
  */
 export function proposedWords(outcome: Outcome): string {
-  const { bank, result, site } = outcome;
+  const isOwn = outcome.kind === 'assess' || outcome.result.money?.recommended === "keep today's bank";
+  return bankWords(outcome, isOwn);
+}
+
+/**
+ * What is proposed or judged without a record, in one sentence.
+ * @param outcome the estimate
+ * @returns "estimate: eight stages, 261 kvar at 400 V, with 7 % reactors."
+ */
+export function estimateWords(outcome: EstimateOutcome): string {
+  return `estimate: ${bankWords(outcome, outcome.kind === 'assess')}`;
+}
+
+function bankWords({ bank, result, site }: BankOutcome, isOwn: boolean): string {
   if (bank.groups.length === 0) {
     const said = (code: string): boolean => result.reasons.some((reason) => reason.code === code);
     if (said('layout.noCandidate')) return 'nothing.';
-    if (said('target.missed')) return 'no bank.';
+    if (said('target.missed') || said('estimate.belowLower') || said('estimate.belowList')) return 'no bank.';
+    if (said('estimate.noNeed'))
+      return `no bank. By the estimate the site holds ${formatNumber(site.targetPowerFactor, 'given')} already.`;
     return `no bank. The site holds ${formatNumber(site.targetPowerFactor, 'given')} already.`;
   }
   const stages = bank.groups.reduce((sum, { count }) => sum + count, 0);
-  const isOwn = outcome.kind === 'assess' || result.money?.recommended === "keep today's bank";
   const own = isOwn ? 'the site’s own bank, ' : '';
   const kvar = `${formatQuantity(result.bank.effectiveKvar, 'kvar')} at${GAP}${formatQuantity(site.nominalV, 'V', 'given')}`;
   return `${own}${countWord(stages)} ${stages === 1 ? 'stage' : 'stages'}, ${kvar}, ${reactorWords(bank.groups)}.`;

@@ -1,7 +1,7 @@
 import type { Remark } from '#libs/engine/index.js';
 import { deviceName, enteredWords } from './device-words.js';
 import { formatApart, formatNumber, formatQuantity, GAP, unitOfName } from './format-number.js';
-import { formatLength, formatMonth } from './local-stamp.js';
+import { formatDate, formatLength, formatMonth } from './local-stamp.js';
 import type { Message } from './message.js';
 import { MESSAGES } from './message-catalogue.js';
 import { plainName } from './plain-name.js';
@@ -99,6 +99,7 @@ function valueWords(name: string, value: number | string, remark: Remark): strin
 
 function textWords(name: string, value: string): string {
   if (name === 'month') return formatMonth(value);
+  if (name === 'date') return formatDate(value);
   if (name === 'device') return deviceName(value);
   if (name === 'value' || name === 'limit') return plainName(enteredWords(spaced(value)));
   return plainName(spaced(value));

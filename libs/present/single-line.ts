@@ -1,4 +1,4 @@
-import type { Outcome, StageGroup } from '#libs/engine/index.js';
+import type { BankOutcome, EstimateOutcome, EstimateResult, Outcome, Result, StageGroup } from '#libs/engine/index.js';
 import { formatNumber, formatQuantity, formatRange, GAP } from './format-number.js';
 import { plainName } from './plain-name.js';
 
@@ -47,7 +47,7 @@ const MOST_LOADS = 3;
  * @param outcome the plan or judgement
  * @returns elements from the grid to the stages
  */
-export function singleLine(outcome: Outcome): SingleLine {
+export function singleLine(outcome: Outcome | EstimateOutcome): SingleLine {
   const { site, result, bank } = outcome;
   const { faultLevelMva } = site.supply;
   const drawn = {
@@ -67,14 +67,14 @@ export function singleLine(outcome: Outcome): SingleLine {
   return { ...drawn, sentence: sentenceOf(drawn) };
 }
 
-function transformers({ site }: Outcome): SingleLine['transformers'] {
+function transformers({ site }: BankOutcome): SingleLine['transformers'] {
   return site.supply.transformers.map(({ ratedKva, impedancePct }) => ({
     name: formatQuantity(ratedKva, 'kVA', 'given'),
     detail: `impedance ${formatQuantity(impedancePct, '%', 'given')}`,
   }));
 }
 
-function feeders({ site, result }: Outcome): Feeder[] {
+function feeders({ site, result }: Outcome | EstimateOutcome): Feeder[] {
   const { motorSharePct, distorting } = site.loads;
   const motors: Feeder[] =
     motorSharePct > 0
@@ -109,9 +109,16 @@ function feeders({ site, result }: Outcome): Feeder[] {
     symbol: 'load',
     name: 'other load',
     short: 'other load',
-    detail: `site at most ${formatQuantity(result.record.maxKw, 'kW')}`,
+    detail: greatestLoad(result),
   };
   return [...motors, ...converters, other];
+}
+
+function greatestLoad(result: Result | EstimateResult): string {
+  if (result.record !== null) return `site at most ${formatQuantity(result.record.maxKw, 'kW')}`;
+  const { months, equipment } = result.estimate;
+  const kw = months.length > 0 ? Math.max(...months.map(({ maxKw }) => maxKw)) : (equipment?.activeKw ?? 0);
+  return `site about ${formatQuantity(kw, 'kW')}, estimated`;
 }
 
 function stageSymbols(groups: readonly StageGroup[]): StageSymbol[] {
@@ -127,7 +134,7 @@ function stageSymbols(groups: readonly StageGroup[]): StageSymbol[] {
   });
 }
 
-function groupWords(outcome: Outcome, group: StageGroup): string {
+function groupWords(outcome: BankOutcome, group: StageGroup): string {
   const reactor = group.reactorPct > 0 ? `reactors ${formatQuantity(group.reactorPct, '%', 'given')}` : 'no reactors';
   const fixed = group.fixed ? ', never switched' : '';
   return `${group.count}${GAP}×${GAP}${bothRatings(outcome, group)}, ${reactor}${fixed}`;
@@ -139,7 +146,7 @@ function groupWords(outcome: Outcome, group: StageGroup): string {
  * @param group the stage's group
  * @returns "50 kvar at 480 V, 37.3 kvar at 400 V"
  */
-export function bothRatings(outcome: Outcome, group: StageGroup): string {
+export function bothRatings(outcome: BankOutcome, group: StageGroup): string {
   const rated = `${formatQuantity(group.ratedKvar, 'kvar', 'given')} at${GAP}${formatQuantity(group.ratedV, 'V', 'given')}`;
   const stage = outcome.result.bank.stages.find(
     (one) => one.ratedKvar === group.ratedKvar && one.ratedV === group.ratedV && one.reactorPct === group.reactorPct,

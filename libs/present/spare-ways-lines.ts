@@ -1,4 +1,4 @@
-import type { Outcome } from '#libs/engine/index.js';
+import type { BankOutcome } from '#libs/engine/index.js';
 import { formatNumber, formatQuantity } from './format-number.js';
 import { verdictWords } from './verdict-words.js';
 
@@ -7,7 +7,7 @@ import { verdictWords } from './verdict-words.js';
  * @param outcome plan or judgement
  * @returns one phrase a stage added
  */
-export function spareWaysLines({ result, site }: Outcome): string[] {
+export function spareWaysLines({ result, site }: BankOutcome): string[] {
   return result.spareWays.map(({ added, ratedKvar, effectiveKvar, conductorMinA, capital, verdict }) => {
     const stages = `${formatNumber(added, 'whole')} × ${formatQuantity(ratedKvar, 'kvar', 'given')}`;
     const cost = capital === null ? '' : `, ${formatQuantity(capital, site.currency ?? '', 'whole')}`;

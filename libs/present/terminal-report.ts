@@ -1,13 +1,24 @@
-import { type Outcome, type RecordSummary, type ScannedLevel, UTC_TABLE, type ZoneTable } from '#libs/engine/index.js';
+import {
+  type BankOutcome,
+  type BankResult,
+  type EstimateOutcome,
+  isRecordSign,
+  type Outcome,
+  type RecordSummary,
+  UTC_TABLE,
+  type ZoneTable,
+} from '#libs/engine/index.js';
 import { deviceTable, openDevices } from './device-words.js';
 import { dutyName } from './figure-words.js';
 import { formatApart, formatNumber, formatQuantity, GAP } from './format-number.js';
 import { formatLength, formatMoment } from './local-stamp.js';
 import { moneyLines } from './money-lines.js';
 import { plainName } from './plain-name.js';
-import { proposedWords } from './proposed-words.js';
+import { estimateWords, proposedWords } from './proposed-words.js';
+import { gradeWords, MONTH_HEADS, monthCells, type QualityStated, qualityRows } from './quality-words.js';
 import { remarkConsequence, remarkSentence } from './remark-words.js';
 import { spareWaysLines } from './spare-ways-lines.js';
+import { finished, tableLines } from './terminal-lines.js';
 import { countDuties, NO_PERMISSION, verdictWords } from './verdict-words.js';
 
 const LABEL_WIDTH = 26;
@@ -20,9 +31,8 @@ const LINE_WIDTH = 96;
  */
 export function resultReport(outcome: Outcome): string {
   const { result, site, zone } = outcome;
-  const { requirement, operation, network } = result;
+  const { requirement, operation } = result;
   const target = formatNumber(requirement.targetPowerFactor, 'given');
-  const count = countDuties(result.duties);
   const factor = (value: number | null) => formatQuantity(value, '');
   const lowest = operation.months.flatMap(({ powerFactorLagging: value }) => (value === null ? [] : [value]));
   const lines = [
@@ -44,6 +54,120 @@ export function resultReport(outcome: Outcome): string {
       `${formatNumber(result.control.setPointPowerFactor, 'given')}, reconnection delay ${formatQuantity(result.control.reconnectDelayS, 's', 'given')}`,
     ),
     row('switchings', formatNumber(operation.totalSwitchings, 'whole')),
+    ...networkLines(result),
+    '',
+    ...moneyRows(outcome),
+    ...spareRows(outcome),
+    ...dutyLines(outcome),
+    ...deviceLines(outcome),
+    ...reasonLines(outcome),
+    ...questionLines(result.record),
+  ];
+  return finished(lines);
+}
+
+/**
+ * The answer of `plan` or `assess` without a record, for a terminal.
+ * @param outcome the estimate
+ * @returns lines of plain text, ending in a line end
+ */
+export function estimateReport(outcome: EstimateOutcome): string {
+  const { result, site } = outcome;
+  const { control, estimate } = result;
+  const left = estimate.refused.flatMap((one) => wrapped(`- ${remarkSentence(one)}`, '  '));
+  return finished([
+    plainName(site.name),
+    'ESTIMATE, without a meter’s record',
+    `Proposed, ${estimateWords(outcome)}`,
+    `Verdict: ${verdictWords(result.verdict)}. ${NO_PERMISSION}`,
+    '',
+    ...needLines(outcome),
+    row(
+      'set point',
+      `${formatNumber(control.setPointPowerFactor, 'given')}, reconnection delay ${formatQuantity(control.reconnectDelayS, 's', 'given')}`,
+    ),
+    ...networkLines(result),
+    '',
+    ...dutyLines(outcome),
+    ...deviceLines(outcome),
+    ...reasonLines(outcome),
+    '',
+    'Left out, since an estimate can’t support it:',
+    ...left,
+  ]);
+}
+
+function needLines({ result }: EstimateOutcome): string[] {
+  const { requirement, estimate, money } = result;
+  const { lowerKvar, upperKvar, listKvar } = requirement;
+  const factors = requirement.months.map((month) => month.powerFactorLagging);
+  const target = formatNumber(requirement.targetPowerFactor, 'given');
+  const bounds = lowerKvar === null || upperKvar === null;
+  return [
+    row('estimated from', estimate.basis),
+    ...(bounds
+      ? []
+      : [
+          row(
+            'bills',
+            `${formatNumber(factors.length, 'whole')}, lowest month ${formatQuantity(lowestOf(factors), '')}`,
+          ),
+          row(
+            `needed for ${target}`,
+            `between ${formatQuantity(lowerKvar, 'kvar')} and ${formatQuantity(upperKvar, 'kvar')} (bounds, estimated)`,
+          ),
+        ]),
+    ...(listKvar === null || estimate.equipment === null
+      ? []
+      : [
+          row(
+            'equipment list',
+            `${formatQuantity(estimate.equipment.activeKw, 'kW')}, ${formatQuantity(estimate.equipment.reactiveKvar, 'kvar')}, ` +
+              `power factor ${formatQuantity(estimate.equipment.powerFactor, '')}; needs ${formatQuantity(listKvar, 'kvar')} for ${target} (estimated)`,
+          ),
+        ]),
+    ...(money === null
+      ? []
+      : [
+          row(
+            'bills by the tariff',
+            `${formatNumber(money.bills.before.total)} before, ${formatNumber(money.bills.after.total)} after (estimated)`,
+          ),
+        ]),
+  ];
+}
+
+/**
+ * What a meter file holds, for a terminal.
+ * @param summary of the record
+ * @param quality of the file
+ * @param zone the clock of its stamps; UTC where none is known
+ * @returns lines of plain text, ending in a line end
+ */
+export function recordReport(summary: RecordSummary, quality: QualityStated, zone: ZoneTable = UTC_TABLE): string {
+  const notes = summary.notes.filter((note) => !isRecordSign(note));
+  return finished([
+    ...recordLines(summary, zone),
+    '',
+    ...qualityRows(quality, zone).flatMap(([label, text]) => wrapped(row(label, text), ' '.repeat(LABEL_WIDTH))),
+    '',
+    ...tableLines([...MONTH_HEADS], quality.months.map(monthCells)),
+    '',
+    ...questionLines(summary),
+    ...notes.flatMap((note) => wrapped(`note: ${remarkSentence(note)}`, '  ')),
+  ]);
+}
+
+/** What the record's values ask of a person. */
+function questionLines({ notes }: RecordSummary): string[] {
+  return notes
+    .filter(isRecordSign)
+    .flatMap((note) => wrapped(`? ${remarkSentence(note)} ${remarkConsequence(note)}`, '  '));
+}
+
+function networkLines({ network, duties }: BankResult): string[] {
+  const count = countDuties(duties);
+  return [
     row(
       'fault level at the bus',
       `${formatQuantity(network.shortCircuitMva, 'MVA')}, ${formatQuantity(network.shortCircuitMinMva, 'MVA')} at the least`,
@@ -52,64 +176,7 @@ export function resultReport(outcome: Outcome): string {
       'rows judged',
       `${count.judged}: ${count.clear} within limits, ${count.watch} near a limit, ${count.avoid} over; ${count.notJudged} not judged`,
     ),
-    '',
-    ...moneyRows(outcome),
-    ...spareRows(outcome),
-    ...dutyLines(outcome),
-    ...deviceLines(outcome),
-    ...reasonLines(outcome),
   ];
-  return finished(lines);
-}
-
-/**
- * What a meter file holds, for a terminal.
- * @param summary of the record
- * @param zone the clock of its stamps; UTC where none is known
- * @returns lines of plain text, ending in a line end
- */
-export function recordReport(summary: RecordSummary, zone: ZoneTable = UTC_TABLE): string {
-  const notes = summary.notes.flatMap((note) => wrapped(`note: ${remarkSentence(note)}`, '  '));
-  return finished([...recordLines(summary, zone), ...notes]);
-}
-
-/**
- * The scan of one level in every corner, for a terminal.
- * @param levels one entry a corner, nominal first
- * @returns a table of plain text, ending in a line end
- */
-export function scanReport(levels: readonly ScannedLevel[]): string {
-  const first = levels[0];
-  if (first === undefined) return '';
-  const severalBuses = levels.some(({ bus }) => bus !== first.bus);
-  const severalStandings = levels.some(({ corner }) => corner.standing !== undefined);
-  const head = [
-    ...(severalBuses ? ['bus'] : []),
-    'fault level',
-    'capacitance',
-    'inductance',
-    'damping',
-    'peak at order',
-    'peak',
-    ...(severalStandings ? ['standing'] : []),
-  ];
-  const rows = levels.map(({ bus, corner, parallelOrderH, peakOhm }) => [
-    ...(severalBuses ? [plainName(bus)] : []),
-    formatQuantity(corner.faultLevelMva, 'MVA', 'given'),
-    `× ${formatNumber(corner.capacitanceFactor, 'given')}`,
-    `× ${formatNumber(corner.inductanceFactor, 'given')}`,
-    formatQuantity(corner.dampingKw, 'kW'),
-    formatQuantity(parallelOrderH, ''),
-    formatQuantity(peakOhm, 'Ω'),
-    ...(severalStandings ? [plainName(corner.standing ?? 'normal')] : []),
-  ]);
-  const widths = head.map((text, at) => Math.max(text.length, ...rows.map((cells) => cells[at]!.length)));
-  const line = (cells: readonly string[]) => cells.map((cell, at) => cell.padStart(widths[at]!)).join('  ');
-  return finished([
-    `Impedance at ${severalBuses ? 'each bus' : 'the bus'} with ${formatQuantity(first.levelKvar, 'kvar')} connected; the first row is the nominal case.`,
-    line(head),
-    ...rows.map(line),
-  ]);
 }
 
 function recordLines(record: RecordSummary, zone: ZoneTable): string[] {
@@ -135,6 +202,10 @@ function recordLines(record: RecordSummary, zone: ZoneTable): string[] {
       `${formatQuantity(record.powerFactorLagging, '')} lagging only, ${formatQuantity(record.powerFactorNet, '')} net`,
     ),
     row('greatest demand', `${formatQuantity(record.maxKw, 'kW')}, ${formatQuantity(record.maxKva, 'kVA')}`),
+    ...wrapped(
+      row('the record is', `${gradeWords(record.grade)}. ${remarkSentence(record.gradeRule)}`),
+      ' '.repeat(LABEL_WIDTH),
+    ),
   ];
 }
 
@@ -143,12 +214,12 @@ function moneyRows(outcome: Outcome): string[] {
   return lines.length === 0 ? [] : [...lines.map(({ label, text }) => row(label, text)), ''];
 }
 
-function spareRows(outcome: Outcome): string[] {
+function spareRows(outcome: BankOutcome): string[] {
   const lines = spareWaysLines(outcome);
   return lines.length === 0 ? [] : [...lines.map((text, k) => row(k === 0 ? 'room for more stages' : '', text)), ''];
 }
 
-function dutyLines({ result }: Outcome): string[] {
+function dutyLines({ result }: BankOutcome): string[] {
   if (result.duties.length === 0) return [];
   const rows = result.duties.map((duty) => {
     const apart = duty.limit === null ? null : formatApart(duty.value, duty.limit);
@@ -165,7 +236,7 @@ function dutyLines({ result }: Outcome): string[] {
 }
 
 /** Devices that were entered or fall short; what is open is counted. */
-function deviceLines(outcome: Outcome): string[] {
+function deviceLines(outcome: BankOutcome): string[] {
   const { devices } = outcome.result;
   if (devices.length === 0) return [];
   const short = deviceTable(outcome).filter((_, at) => devices[at]!.state === 'short');
@@ -178,7 +249,7 @@ function deviceLines(outcome: Outcome): string[] {
   ];
 }
 
-function reasonLines({ result }: Outcome): string[] {
+function reasonLines({ result }: BankOutcome): string[] {
   return result.reasons.flatMap((reason) => {
     const consequence = remarkConsequence(reason);
     return wrapped(`- ${remarkSentence(reason)}${consequence === '' ? '' : ` ${consequence}`}`, '  ');
@@ -204,8 +275,4 @@ function wrapped(text: string, indent: string): string[] {
     } else line = line === '' ? word : `${line} ${word}`;
   }
   return [...lines, line];
-}
-
-function finished(lines: readonly string[]): string {
-  return `${lines.join('\n').trimEnd()}\n`;
 }

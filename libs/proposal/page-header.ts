@@ -1,4 +1,5 @@
-import type { Outcome } from '#libs/engine/index.js';
+import { type EstimateOutcome, isEstimate, type Outcome } from '#libs/engine/index.js';
+import { estimateSpan } from '#libs/present/estimate-words.js';
 import { formatMoment } from '#libs/present/local-stamp.js';
 import { plainName } from '#libs/present/plain-name.js';
 import { HAIR, INK, STROKE } from './ink.js';
@@ -23,18 +24,22 @@ export interface SetHeader {
 }
 
 /** Breaks the header's lines for the page's width; the same on every page. */
-export function setHeader({ type, width }: Paper, frame: ProposalFrame, outcome: Outcome): SetHeader {
-  const { record, zone } = outcome;
+export function setHeader({ type, width }: Paper, frame: ProposalFrame, outcome: Outcome | EstimateOutcome): SetHeader {
   const title: Piece[] = [`Proposal ${frame.number}, revision ${frame.revision}`, { text: `, ${frame.state}` }];
-  const window = `record ${formatMoment(zone, record.firstS)} to ${formatMoment(zone, record.endS)}, ${zone.zone}`;
   const set = {
     title: type.wrap(title, HEAD, width - PAGE_ROOM),
-    window: type.wrap([window], LABEL, width - HASH_ROOM),
+    window: type.wrap([windowWords(outcome)], LABEL, width - HASH_ROOM),
     hash: `content ${hashInFours(frame.contentHash)}, engine ${frame.engineVersion}`,
     site: plainName(outcome.site.name),
   };
   const titleEnd = FIRST_BASELINE + (set.title.length - 1) * leading(HEAD);
   return { ...set, contentTop: titleEnd + 26 + set.window.length * leading(LABEL) };
+}
+
+function windowWords(outcome: Outcome | EstimateOutcome): string {
+  if (isEstimate(outcome)) return `ESTIMATE from ${estimateSpan(outcome)}; no record`;
+  const { record, zone } = outcome;
+  return `record ${formatMoment(zone, record.firstS)} to ${formatMoment(zone, record.endS)}, ${zone.zone}`;
 }
 
 /** The first 16 digits in fours, as a reader can compare them. */

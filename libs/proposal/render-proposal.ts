@@ -1,4 +1,4 @@
-import type { Outcome } from '#libs/engine/index.js';
+import { type EstimateOutcome, isEstimate, monthSpan, type Outcome } from '#libs/engine/index.js';
 import { plainName } from '#libs/present/plain-name.js';
 import { drawHeaders, setHeader } from './page-header.js';
 import { Paper, sheet } from './paper.js';
@@ -8,6 +8,7 @@ import { drawAssumptions, drawBasis } from './section-basis.js';
 import { drawCautions } from './section-cautions.js';
 import { drawDataQuality } from './section-data.js';
 import { drawDecision } from './section-decision.js';
+import { drawEstimate, drawLeftOut } from './section-estimate.js';
 import { drawFindings } from './section-findings.js';
 import { drawHandCheck } from './section-hand-check.js';
 import { drawValidity } from './section-limits.js';
@@ -23,12 +24,13 @@ export type { ProposalFrame } from './proposal-frame.js';
 
 /**
  * The proposal as a tagged PDF: equal outcome and frame give equal bytes.
+ * A plan without a record prints as an estimate and leaves out what needs one.
  * Sections 10 (sensitivity) and 11 (money) are left out in this edition; the numbers of the others stay.
  * @param outcome the plan or judgement, its result already put in words
  * @param frame number, revision, state, hash and sheet
  * @returns the file's bytes
  */
-export async function renderProposal(outcome: Outcome, frame: ProposalFrame): Promise<Uint8Array> {
+export async function renderProposal(outcome: Outcome | EstimateOutcome, frame: ProposalFrame): Promise<Uint8Array> {
   const doc = await openDocument(outcome, frame);
   const chunks: Buffer[] = [];
   const finished = new Promise<void>((resolve, reject) => {
@@ -44,10 +46,12 @@ export async function renderProposal(outcome: Outcome, frame: ProposalFrame): Pr
   drawFindings(paper, outcome);
   drawBasis(paper, outcome);
   drawAssumptions(paper, outcome);
-  drawDataQuality(paper, outcome);
+  if (isEstimate(outcome)) drawEstimate(paper, outcome);
+  else drawDataQuality(paper, outcome);
   drawMethod(paper, outcome);
   drawStages(paper, outcome);
-  drawLoad(paper, outcome);
+  if (isEstimate(outcome)) drawLeftOut(paper, outcome);
+  else drawLoad(paper, outcome);
   drawNetwork(paper, outcome);
   drawMeasured(paper, outcome);
   drawValidity(paper, outcome);
@@ -63,9 +67,9 @@ export async function renderProposal(outcome: Outcome, frame: ProposalFrame): Pr
 }
 
 /** pdfkit is loaded when the first paper is wanted; dates come from the content, never from a clock. */
-async function openDocument(outcome: Outcome, frame: ProposalFrame): Promise<PDFKit.PDFDocument> {
+async function openDocument(outcome: Outcome | EstimateOutcome, frame: ProposalFrame): Promise<PDFKit.PDFDocument> {
   const { default: PDFDocument } = await import('pdfkit');
-  const when = new Date(outcome.record.endS * 1000);
+  const when = new Date(contentEndS(outcome) * 1000);
   return new PDFDocument({
     size: sheet(frame.paper ?? 'A4'),
     margin: 0,
@@ -86,4 +90,12 @@ async function openDocument(outcome: Outcome, frame: ProposalFrame): Promise<PDF
       ModDate: when,
     },
   });
+}
+
+/** End of what the paper stands on: the record's, or of the months of the bills; the day of asking without either [s]. */
+function contentEndS(outcome: Outcome | EstimateOutcome): number {
+  if (!isEstimate(outcome)) return outcome.record.endS;
+  const last = outcome.result.estimate.months.at(-1);
+  if (last === undefined) return Date.parse(`${outcome.site.asOf ?? '1970-01-01'}T00:00:00Z`) / 1000;
+  return monthSpan(outcome.zone, Number(last.month.slice(0, 4)), Number(last.month.slice(5))).endS;
 }

@@ -1,4 +1,4 @@
-import type { Outcome } from '#libs/engine/index.js';
+import type { BankOutcome } from '#libs/engine/index.js';
 import { formatNumber, formatQuantity } from '#libs/present/format-number.js';
 import { verdictWords } from '#libs/present/verdict-words.js';
 import { NOTE, type Paper } from './paper.js';
@@ -20,7 +20,7 @@ const FROM = {
 } as const;
 
 /** What becomes of the verdict as capacitors age, and the capacitance at which a stage must come out. */
-export function drawAgeing(paper: Paper, outcome: Outcome): void {
+export function drawAgeing(paper: Paper, outcome: BankOutcome): void {
   const { cases, stages } = outcome.result.ageing;
   if (cases.length === 0) return;
   const graver = cases.filter(({ verdict }) => verdict === 'avoid').length;

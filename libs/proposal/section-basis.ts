@@ -1,4 +1,4 @@
-import type { Outcome } from '#libs/engine/index.js';
+import type { BankOutcome } from '#libs/engine/index.js';
 import { basisOfDesign, RULE_SET_WORDS } from '#libs/present/basis-of-design.js';
 import { formatNumber, formatQuantity } from '#libs/present/format-number.js';
 import { plainName } from '#libs/present/plain-name.js';
@@ -7,7 +7,7 @@ import { NOTE, type Paper } from './paper.js';
 import { drawTable } from './table.js';
 
 /** Documents with their editions, and what each was used for. */
-export function drawBasis(paper: Paper, outcome: Outcome): void {
+export function drawBasis(paper: Paper, outcome: BankOutcome): void {
   const { site } = outcome;
   paper.heading('3', `Basis of design: ${RULE_SET_WORDS[site.rules]}`, { keep: 130 });
   paper.paragraph([
@@ -30,7 +30,7 @@ export function drawBasis(paper: Paper, outcome: Outcome): void {
 }
 
 /** The loads that distort, in the order the single-line diagram numbers them. */
-function drawLoads(paper: Paper, { site }: Outcome): void {
+function drawLoads(paper: Paper, { site }: BankOutcome): void {
   const { distorting } = site.loads;
   if (distorting === null || distorting.length === 0) return;
   const columns = [
@@ -54,7 +54,7 @@ function drawLoads(paper: Paper, { site }: Outcome): void {
 }
 
 /** Where the limits of distortion were held against the voltage. */
-function pointWords({ result }: Outcome): string {
+function pointWords({ result }: BankOutcome): string {
   const { voltage, points, couplingPoint, atCouplingPoint } = result.limits;
   const at = points.map(plainName).join(', ');
   const judged = `${voltage} is held against the voltage at ${points.length === 1 ? 'bus' : 'the buses'} ${at}`;
@@ -64,7 +64,7 @@ function pointWords({ result }: Outcome): string {
 }
 
 /** Every value that was taken because none was given, and what settles it. */
-export function drawAssumptions(paper: Paper, outcome: Outcome): void {
+export function drawAssumptions(paper: Paper, outcome: BankOutcome): void {
   const assumptions = outcome.result.assumptions.filter(({ code }) => !code.startsWith('understood.'));
   const count = assumptions.length;
   paper.heading(
@@ -87,7 +87,7 @@ export function drawAssumptions(paper: Paper, outcome: Outcome): void {
 }
 
 /** Values that were given in another form, as they were understood. */
-function drawUnderstood(paper: Paper, outcome: Outcome): void {
+function drawUnderstood(paper: Paper, outcome: BankOutcome): void {
   const understood = outcome.result.assumptions.filter(({ code }) => code.startsWith('understood.'));
   if (understood.length === 0) return;
   paper.heading('4.1', 'As understood: values that were given in another form', { level: 3 });

@@ -1,10 +1,10 @@
-import type { Outcome } from '#libs/engine/index.js';
+import type { BankOutcome } from '#libs/engine/index.js';
 import { INK, STROKE } from './ink.js';
 import { leading, type Paper, STRONG } from './paper.js';
 import { BODY } from './typesetter.js';
 
 /** All cautions, always; the one section where hazard words stand. */
-export function drawCautions(paper: Paper, outcome: Outcome): void {
+export function drawCautions(paper: Paper, outcome: BankOutcome): void {
   paper.heading('15', 'Cautions');
   const indent = 20;
   outcome.result.cautions.forEach(({ text }, at) => {

@@ -1,7 +1,9 @@
-import type { Outcome } from '#libs/engine/index.js';
+import { isRecordSign, monthCoverage, type Outcome } from '#libs/engine/index.js';
 import { formatNumber, formatQuantity } from '#libs/present/format-number.js';
 import { formatLength, formatMoment } from '#libs/present/local-stamp.js';
 import { plainName } from '#libs/present/plain-name.js';
+import { gradeWords, MONTH_HEADS, monthCells } from '#libs/present/quality-words.js';
+import { remarkConsequence } from '#libs/present/remark-words.js';
 import type { Paper } from './paper.js';
 import { drawTable } from './table.js';
 
@@ -15,8 +17,22 @@ export function drawDataQuality(paper: Paper, outcome: Outcome): void {
     { head: 'value', share: 26, align: 'right' as const },
     { head: '', share: 40 },
   ];
+  paper.paragraph([`The record is ${gradeWords(record.grade)}. ${record.gradeRule.text}`]);
   drawTable(paper, columns, recordRows(outcome));
-  const { notes } = record;
+  drawCoverage(paper, outcome);
+  const asked = record.notes.filter(isRecordSign);
+  if (asked.length > 0) {
+    const rows = asked.map((note) => [note.text, remarkConsequence(note)]);
+    drawTable(
+      paper,
+      [
+        { head: 'what its values ask', share: 1 },
+        { head: 'to be answered before issue', share: 1 },
+      ],
+      rows,
+    );
+  }
+  const notes = record.notes.filter((note) => !isRecordSign(note));
   if (notes.length === 0) {
     paper.paragraph(['The file was read as it stands: nothing was repaired, reordered or left out.']);
     return;
@@ -26,6 +42,17 @@ export function drawDataQuality(paper: Paper, outcome: Outcome): void {
     [{ head: 'what its reader decided', share: 1 }],
     notes.map(({ text }) => [text]),
   );
+}
+
+/** What a repair filled is counted in the table above; by the month it counts as valid. */
+function drawCoverage(paper: Paper, { record, zone }: Outcome): void {
+  const heads = MONTH_HEADS.filter((head) => head !== 'repaired');
+  const columns = heads.map((head, at) => ({
+    head,
+    share: 1,
+    align: at === 0 ? ('left' as const) : ('right' as const),
+  }));
+  drawTable(paper, columns, monthCoverage(record, zone).map(monthCells));
 }
 
 function recordRows({ result, zone }: Outcome): string[][] {

@@ -1,7 +1,15 @@
-import { cornerSet, type Outcome } from '#libs/engine/index.js';
+import {
+  type BankOutcome,
+  cornerSet,
+  type EstimateOutcome,
+  isEstimate,
+  type Outcome,
+  type Verdict,
+} from '#libs/engine/index.js';
+import { estimateFigures } from '#libs/present/estimate-words.js';
 import { formatNumber, formatQuantity, GAP } from '#libs/present/format-number.js';
 import { plainName } from '#libs/present/plain-name.js';
-import { proposedWords } from '#libs/present/proposed-words.js';
+import { estimateWords, proposedWords } from '#libs/present/proposed-words.js';
 import { singleLine } from '#libs/present/single-line.js';
 import { countDuties, NO_PERMISSION, VERDICT_WORDS } from '#libs/present/verdict-words.js';
 import { setSingleLine } from './draw-single-line.js';
@@ -19,7 +27,7 @@ const BAND = 24;
 const SENTENCE_SHARE = 0.43;
 
 /** Title and decision box: what is proposed, how it was judged, what it does not cover, and the single-line diagram. */
-export function drawDecision(paper: Paper, outcome: Outcome): void {
+export function drawDecision(paper: Paper, outcome: Outcome | EstimateOutcome): void {
   const { site } = outcome;
   const title = [`Power-factor correction for ${plainName(site.name)}`];
   const style = TITLES.find((one) => paper.type.wrap(title, one, paper.width).length <= 3) ?? TITLES.at(-1)!;
@@ -28,7 +36,7 @@ export function drawDecision(paper: Paper, outcome: Outcome): void {
   drawBox(paper, outcome);
 }
 
-function boardWords({ site }: Outcome): string {
+function boardWords({ site }: BankOutcome): string {
   const { transformers } = site.supply;
   const board = `${formatQuantity(site.nominalV, 'V', 'given')} main board, ${formatNumber(site.frequencyHz, 'given')}${GAP}Hz`;
   const ratings = transformers.map(({ ratedKva }) => formatQuantity(ratedKva, 'kVA', 'given')).join(', ');
@@ -44,7 +52,7 @@ interface Paragraph {
 }
 
 /** The sentences of the box: proposed, judged, not covered. */
-function sentences(paper: Paper, outcome: Outcome, width: number): Paragraph[] {
+function sentences(paper: Paper, outcome: Outcome | EstimateOutcome, width: number): Paragraph[] {
   const { result } = outcome;
   const count = countDuties(result.duties);
   const set = (text: string, style: Style, after: number, indent = 0): Paragraph => ({
@@ -58,7 +66,11 @@ function sentences(paper: Paper, outcome: Outcome, width: number): Paragraph[] {
       : `${count.judged} rows judged: ${count.clear} within limits, ${count.watch} near a limit, ${count.avoid} over a limit. ` +
         `${count.notJudged} not judged.`;
   return [
-    set(`Proposed: ${proposedWords(outcome)}`, HEADLINE, 5),
+    set(
+      isEstimate(outcome) ? `Proposed, ${estimateWords(outcome)}` : `Proposed: ${proposedWords(outcome)}`,
+      HEADLINE,
+      5,
+    ),
     set(verdictSentence(outcome), STRONG, 6, 18),
     set(judged, BODY, 5),
     set(`Does not cover: ${notCovered(outcome)}.`, BODY, 5),
@@ -66,7 +78,7 @@ function sentences(paper: Paper, outcome: Outcome, width: number): Paragraph[] {
   ];
 }
 
-function verdictSentence({ result, site }: Outcome): string {
+function verdictSentence({ result, site }: BankOutcome): string {
   const corners = cornerSet(site.supply, site.loads, site.nominalV).corners.length;
   const levels = result.bank.levelsKvar.length;
   const words = VERDICT_WORDS[result.verdict];
@@ -76,15 +88,16 @@ function verdictSentence({ result, site }: Outcome): string {
     : `${words}; ${levels} levels and ${corners} corners computed`;
 }
 
-function notCovered({ result, site }: Outcome): string {
+function notCovered({ result, site }: Outcome | EstimateOutcome): string {
   const parts = [
+    ...(result.record === null ? ['the load within a month', 'switchings'] : []),
     'costs and savings',
     'ageing and changes of the load',
     'rating of breakers and cables beyond section 7',
   ];
   if (site.loads.distorting === null || site.loads.backgroundPct === null)
     parts.unshift('distortion, since loads or background are unknown');
-  if (result.record.missing > 0)
+  if (result.record !== null && result.record.missing > 0)
     parts.push(`${formatNumber(result.record.missing, 'whole')} intervals missing from the record`);
   return parts.join('; ');
 }
@@ -116,22 +129,23 @@ function keyFigures({ result, site }: Outcome): [string, string][] {
   ];
 }
 
-function drawBox(paper: Paper, outcome: Outcome): void {
+function drawBox(paper: Paper, outcome: Outcome | EstimateOutcome): void {
   const inner = { x: paper.left + PADDING, width: paper.width - 2 * PADDING };
   const textWidth = SENTENCE_SHARE * inner.width - 12;
   const text = sentences(paper, outcome, textWidth);
   const textHeight = text.reduce((sum, { lines, style, after }) => sum + lines.length * leading(style) + after, 0);
-  const figures = keyFigures(outcome);
+  const figures = isEstimate(outcome) ? estimateFigures(outcome) : keyFigures(outcome);
   const rowHeight = leading(BODY) + 4.4;
   const figuresHeight = Math.ceil(figures.length / 2) * rowHeight;
   const diagram = setSingleLine(paper, singleLine(outcome), inner.width);
-  const band = outcome.result.verdict === 'avoid' ? BAND : 0;
+  const bandText = bandWords(outcome);
+  const band = bandText === null ? 0 : BAND;
   const upper = Math.max(textHeight, figuresHeight) + 2 * PADDING;
   const whole = band + upper + diagram.height + PADDING;
   // with the longest of names the diagram takes a box of its own on the next page
   const apart = whole + 4 > paper.bottom - paper.y;
   const top = paper.y;
-  if (band > 0) drawBand(paper, top);
+  if (bandText !== null) drawBand(paper, top, bandText);
   drawSentences(paper, text, { x: inner.x, y: top + band + PADDING, verdict: outcome.result.verdict });
   const right = { x: inner.x + SENTENCE_SHARE * inner.width, width: (1 - SENTENCE_SHARE) * inner.width };
   drawFigures(paper, figures, { ...right, y: top + band + PADDING, rowHeight });
@@ -162,8 +176,17 @@ function drawFrame(paper: Paper, top: number, height: number): void {
   });
 }
 
-/** Across the box where a limit is exceeded: black, with its mark reversed. */
-function drawBand(paper: Paper, top: number): void {
+/** What stands across the box: a limit exceeded, or no record behind the plan. */
+function bandWords(outcome: Outcome | EstimateOutcome): string | null {
+  const over = outcome.result.verdict === 'avoid';
+  const passed = `${VERDICT_WORDS.avoid[0]!.toUpperCase()}${VERDICT_WORDS.avoid.slice(1)}`;
+  if (isEstimate(outcome))
+    return `${over ? `${passed}, and an estimate` : 'Estimate, no record'}: not to be built as it stands`;
+  return over ? `${passed}: not to be built as it stands` : null;
+}
+
+/** Across the box: black, with its mark reversed. */
+function drawBand(paper: Paper, top: number, words: string): void {
   const style: Style = { ...STRONG, size: 11, ink: PAPER };
   paper.artifact(() => {
     const { doc, left, width } = paper;
@@ -176,16 +199,11 @@ function drawBand(paper: Paper, top: number): void {
       .stroke(INK);
   });
   paper.tagged('P', () => {
-    const words = `${VERDICT_WORDS.avoid[0]!.toUpperCase()}${VERDICT_WORDS.avoid.slice(1)}: not to be built as it stands`;
     paper.type.put([words], style, paper.left + PADDING + 18, top + 16);
   });
 }
 
-function drawSentences(
-  paper: Paper,
-  text: readonly Paragraph[],
-  at: { x: number; y: number; verdict: Outcome['result']['verdict'] },
-): void {
+function drawSentences(paper: Paper, text: readonly Paragraph[], at: { x: number; y: number; verdict: Verdict }): void {
   let { y } = at;
   text.forEach(({ lines, style, after }, n) => {
     const indent = n === 1 ? 18 : 0;

@@ -1,4 +1,4 @@
-import type { Outcome } from '#libs/engine/index.js';
+import type { BankOutcome } from '#libs/engine/index.js';
 import { deviceTable, openDevices } from '#libs/present/device-words.js';
 import { countWord } from '#libs/present/findings.js';
 import { formatQuantity } from '#libs/present/format-number.js';
@@ -18,7 +18,7 @@ const COLUMNS: Column[] = [
 ];
 
 /** Every device with what it meets, the rating it needs and what the site has; never a product. */
-export function drawDevices(paper: Paper, outcome: Outcome): void {
+export function drawDevices(paper: Paper, outcome: BankOutcome): void {
   const { result } = outcome;
   const open = openDevices(result.devices);
   const left = open === 0 ? 'every one is entered' : `${countWord(open)} of ${result.devices.length} not entered`;

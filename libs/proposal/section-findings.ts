@@ -1,4 +1,4 @@
-import type { Outcome } from '#libs/engine/index.js';
+import type { EstimateOutcome, Outcome } from '#libs/engine/index.js';
 import { type Finding, findingCount, findings } from '#libs/present/findings.js';
 import type { FindingLevel } from '#libs/present/message.js';
 import { INK, PAPER, SOFT, STROKE } from './ink.js';
@@ -17,7 +17,7 @@ const COLUMNS: Column[] = [
 ];
 
 /** What a reviewer has to know, gravest first; each finding to be accepted has a line to sign on. */
-export function drawFindings(paper: Paper, outcome: Outcome): void {
+export function drawFindings(paper: Paper, outcome: Outcome | EstimateOutcome): void {
   const list = findings(outcome);
   paper.heading('2', `Findings: ${findingCount(list)}`);
   if (list.length === 0) {

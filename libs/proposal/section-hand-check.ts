@@ -1,4 +1,4 @@
-import type { Figure, Outcome } from '#libs/engine/index.js';
+import type { Figure, BankOutcome } from '#libs/engine/index.js';
 import { formatNumber } from '#libs/present/format-number.js';
 import { INK, SOFT, STROKE } from './ink.js';
 import { NOTE, type Paper } from './paper.js';
@@ -8,7 +8,7 @@ import { NEW_LINE } from './typesetter.js';
 const MOST_ROWS = 10;
 
 /** The few decisive figures to be worked again by hand, with room for the checker's own. */
-export function drawHandCheck(paper: Paper, outcome: Outcome): void {
+export function drawHandCheck(paper: Paper, outcome: BankOutcome): void {
   const rows = handChecked(outcome.result.figures);
   paper.heading('13', 'Hand check: work these again, apart from this paper');
   const columns: Column[] = [

@@ -1,10 +1,13 @@
 import {
   AMBIENT_CATEGORIES,
   cornerSet,
+  type EstimateOutcome,
+  isEstimate,
   networkStates,
   type Outcome,
   OVERVOLTAGE_DURATIONS,
 } from '#libs/engine/index.js';
+import { estimateSpan } from '#libs/present/estimate-words.js';
 import { countWord } from '#libs/present/findings.js';
 import { formatNumber, formatQuantity, formatRange } from '#libs/present/format-number.js';
 import { formatMoment } from '#libs/present/local-stamp.js';
@@ -12,7 +15,7 @@ import type { Paper } from './paper.js';
 import { drawTable } from './table.js';
 
 /** Within what the verdict was found, and what was not looked at. */
-export function drawValidity(paper: Paper, outcome: Outcome): void {
+export function drawValidity(paper: Paper, outcome: Outcome | EstimateOutcome): void {
   paper.heading('12', 'Limits of validity: the verdict holds for what was computed');
   const columns = [
     { head: 'what', share: 26 },
@@ -31,18 +34,15 @@ export function drawValidity(paper: Paper, outcome: Outcome): void {
   }
 }
 
-function validityRows(outcome: Outcome): string[][] {
-  const { site, record, zone, bank, result } = outcome;
+function validityRows(outcome: Outcome | EstimateOutcome): string[][] {
+  const { site, bank, result } = outcome;
   const states = site.topology === null ? [null] : networkStates(site.topology);
   const { corners } = cornerSet(site.supply, site.loads, site.nominalV, states);
   const buses = result.limits.points.length;
   const { faultLevelMva } = site.supply;
   const present = (result.network.levels[0]?.orders ?? []).map(({ orderH }) => formatNumber(orderH, 'given'));
   const rows = [
-    [
-      'load',
-      `the record from ${formatMoment(zone, record.firstS)} to ${formatMoment(zone, record.endS)}, no other time`,
-    ],
+    ['load', loadWords(outcome)],
     [
       'voltage at the bus',
       `${formatQuantity(site.nominalV, 'V', 'given')} nominal, at most ${formatQuantity(site.highestV, 'V', 'given')}`,
@@ -71,4 +71,10 @@ function validityRows(outcome: Outcome): string[][] {
     ]);
   } else if (bank.groups.length > 0) rows.push(['ambient', 'category not stated: temperatures are not judged']);
   return rows;
+}
+
+function loadWords(outcome: Outcome | EstimateOutcome): string {
+  if (isEstimate(outcome)) return `an estimate from ${estimateSpan(outcome)}; the load itself was not recorded`;
+  const { record, zone } = outcome;
+  return `the record from ${formatMoment(zone, record.firstS)} to ${formatMoment(zone, record.endS)}, no other time`;
 }

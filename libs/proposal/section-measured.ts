@@ -1,4 +1,4 @@
-import type { Outcome } from '#libs/engine/index.js';
+import type { BankOutcome } from '#libs/engine/index.js';
 import { formatNumber, formatQuantity, formatRange } from '#libs/present/format-number.js';
 import { plainName } from '#libs/present/plain-name.js';
 import { NOTE, type Paper } from './paper.js';
@@ -15,7 +15,7 @@ const COLUMNS: Column[] = [
 ];
 
 /** A measurement beside the model with the same kvar connected. */
-export function drawMeasured(paper: Paper, outcome: Outcome): void {
+export function drawMeasured(paper: Paper, outcome: BankOutcome): void {
   const { measured } = outcome.result;
   if (measured === null || measured.rows.length === 0) return;
   const off = measured.rows.filter(({ standing }) => standing !== 'within').length;

@@ -1,4 +1,4 @@
-import type { Figure, Outcome } from '#libs/engine/index.js';
+import { type EstimateOutcome, type Figure, isEstimate, type Outcome } from '#libs/engine/index.js';
 import { formatNumber, formatQuantity } from '#libs/present/format-number.js';
 import { formatMoment } from '#libs/present/local-stamp.js';
 import { workedInterval } from '#libs/present/worst-interval.js';
@@ -9,12 +9,21 @@ import { BODY, NEW_LINE, type Piece, type Style } from './typesetter.js';
 
 const STYLE: Style = { ...BODY, size: 9.2 };
 
-const METHOD = [
+const ESTIMATE = [
+  'Estimate. From a month’s bill the need has two bounds: the constant kvar that lifts the month’s power factor to the target, ' +
+    'and the kvar at the greatest demand if that had the month’s power factor. From a list the load is the sum of rated power over ' +
+    'efficiency, by load factor and coincidence, with its own power factors. The bank is sized by the upper bound; nothing is simulated.',
+];
+
+const FROM_RECORD = [
   'Need. In every interval the kvar at the bus beyond P · tan φ of the target. Metered at the primary, the bus power is ' +
     'what the meter reads less the transformer’s own part, and the need is the kvar at the bus that brings the meter to its target.',
-  'Bank. A stage gives Q_N · (U / U_N)^2 / (1 − p) at the bus voltage U, with reactor ratio p; its levels are the distinct sums.',
   'Simulation. In time order, on interval means: the controller holds while the deviation is within its response, else takes ' +
     'the level its mode asks for from the stages that are free. Switchings happen at the beginning of an interval.',
+];
+
+const METHOD = [
+  'Bank. A stage gives Q_N · (U / U_N)^2 / (1 − p) at the bus voltage U, with reactor ratio p; its levels are the distinct sums.',
   'Network. Supply, transformer and damping load as impedances over the order, the bank as an admittance on them. Every level ' +
     'is judged in every corner of fault level, capacitance, inductance and damping, all stages moving together.',
   'Harmonics. Each source alone, then summed by the exponents of IEC TR 61000-3-6: 1 below order 5, 1.4 to order 10, 2 above, ' +
@@ -24,11 +33,12 @@ const METHOD = [
 ];
 
 /** How it was computed, a worst interval in full, and every figure with the values put in. */
-export function drawMethod(paper: Paper, outcome: Outcome): void {
+export function drawMethod(paper: Paper, outcome: Outcome | EstimateOutcome): void {
   const { figures } = outcome.result;
   paper.heading('6', `Method and working: ${figures.length} figures, each with its values put in`);
-  for (const sentence of METHOD) paper.paragraph([sentence], { after: 3.5 });
-  drawWorked(paper, outcome);
+  const load = isEstimate(outcome) ? ESTIMATE : FROM_RECORD;
+  for (const sentence of [...load, ...METHOD]) paper.paragraph([sentence], { after: 3.5 });
+  if (!isEstimate(outcome)) drawWorked(paper, outcome);
   paper.heading('6.2', 'Every figure, with its source and the units of what was put in', { level: 3 });
   const rows = figures.map((figure): Cell[] => [
     [figure.label, NEW_LINE, { text: `${figure.source}. ${unitWords(figure)}`, ink: SOFT, size: 8.4 }],

@@ -1,4 +1,4 @@
-import type { NetworkLevel, Outcome } from '#libs/engine/index.js';
+import type { NetworkLevel, BankOutcome } from '#libs/engine/index.js';
 import { dutyName } from '#libs/present/figure-words.js';
 import { countWord } from '#libs/present/findings.js';
 import { formatApart, formatNumber, formatQuantity, GAP } from '#libs/present/format-number.js';
@@ -29,7 +29,7 @@ const MOST_LEVELS = 40;
 const MAP_ROWS = 24;
 
 /** Impedance, margins, duties and levels; a rival stands beside the bank on the same scales. */
-export function drawNetwork(paper: Paper, outcome: Outcome): void {
+export function drawNetwork(paper: Paper, outcome: BankOutcome): void {
   const { result } = outcome;
   if (result.bank.stages.length === 0) {
     paper.heading('9', 'Network and duties: nothing is connected');
@@ -52,7 +52,7 @@ function dutyWords({ avoid, watch }: DutyCount): string {
   return watch > 0 ? `${rows(watch)} near a limit` : 'every row judged is within its limit';
 }
 
-function networkSentence({ result }: Outcome): string {
+function networkSentence({ result }: BankOutcome): string {
   const { levels, shortCircuitMva, shortCircuitMinMva } = result.network;
   const present = (levels[0]?.orders ?? []).map(({ orderH }) => formatNumber(orderH, 'given'));
   const peaks = levels
@@ -65,7 +65,7 @@ function networkSentence({ result }: Outcome): string {
   return `${fault} ${orders} Over all levels, nominal and worst case, the parallel resonance lies between order ${range}.`;
 }
 
-function drawImpedance(paper: Paper, outcome: Outcome): void {
+function drawImpedance(paper: Paper, outcome: BankOutcome): void {
   const { bank, rival } = outcome;
   const own = impedanceOverOrder(outcome, bank, bank.groups.length === 0 ? 'No bank' : bankName(bank.groups));
   const [left, right] = halves(paper);
@@ -92,7 +92,7 @@ function drawImpedance(paper: Paper, outcome: Outcome): void {
   paper.paragraph([key], { style: NOTE });
 }
 
-function drawMargins(paper: Paper, outcome: Outcome): void {
+function drawMargins(paper: Paper, outcome: BankOutcome): void {
   const { bank, margins, rival } = outcome;
   if (margins.ordersH.length === 0) {
     paper.paragraph(['No order with a limit is present, so there is no map of margins.'], { style: NOTE });
@@ -146,7 +146,7 @@ const DUTY_COLUMNS: Column[] = [
   { head: 'verdict', share: 22 },
 ];
 
-function drawDuties(paper: Paper, outcome: Outcome): void {
+function drawDuties(paper: Paper, outcome: BankOutcome): void {
   const { duties } = outcome.result;
   paper.heading('9.5', 'Duties, worst level and corner', { level: 3 });
   const rows = duties.map((duty): Cell[] => {
@@ -179,7 +179,7 @@ const LEVEL_COLUMNS: Column[] = [
   { head: 'fault level, C, L, damping', share: 43 },
 ];
 
-function drawLevels(paper: Paper, outcome: Outcome): void {
+function drawLevels(paper: Paper, outcome: BankOutcome): void {
   const { levels } = outcome.result.network;
   const shown = levels.length > 2 * MOST_LEVELS ? spread(levels) : levels;
   paper.heading('9.6', 'Levels, nominal and worst case', { level: 3 });

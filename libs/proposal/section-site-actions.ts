@@ -1,11 +1,11 @@
-import type { Outcome } from '#libs/engine/index.js';
+import type { BankOutcome } from '#libs/engine/index.js';
 import { formatNumber, formatQuantity, GAP } from '#libs/present/format-number.js';
 import { INK, STROKE } from './ink.js';
 import type { Paper } from './paper.js';
 import { type Cell, drawTable } from './table.js';
 
 /** What is to be done and noted on site before the bank goes into service. */
-export function drawSiteActions(paper: Paper, outcome: Outcome): void {
+export function drawSiteActions(paper: Paper, outcome: BankOutcome): void {
   if (outcome.bank.groups.length === 0) {
     paper.heading('14', 'Site actions: none, since nothing is built');
     paper.paragraph(['Plan again when load, tariff or supply change.']);
@@ -37,7 +37,7 @@ function blank(paper: Paper): Cell {
   };
 }
 
-function siteActions(outcome: Outcome): [string, string][] {
+function siteActions(outcome: BankOutcome): [string, string][] {
   const { site, result, bank } = outcome;
   const { control, charge } = result;
   const met = (name: string): number | null => {

@@ -1,4 +1,4 @@
-import { dischargeS, type Outcome, type StageGroup } from '#libs/engine/index.js';
+import { dischargeS, type BankOutcome, type StageGroup } from '#libs/engine/index.js';
 import { countWord } from '#libs/present/findings.js';
 import { formatNumber, formatQuantity, GAP } from '#libs/present/format-number.js';
 import { formatLength } from '#libs/present/local-stamp.js';
@@ -8,7 +8,7 @@ import { drawDevices } from './section-devices.js';
 import { type Column, drawTable } from './table.js';
 
 /** Stages with both ratings, what protects them, and how long each keeps its charge. */
-export function drawStages(paper: Paper, outcome: Outcome): void {
+export function drawStages(paper: Paper, outcome: BankOutcome): void {
   const { bank, result } = outcome;
   const count = result.bank.stages.length;
   if (count === 0) {
@@ -41,7 +41,7 @@ const STAGE_COLUMNS: Column[] = [
   { head: 'switched', share: 14 },
 ];
 
-function stageRow(outcome: Outcome, group: StageGroup, at: number): string[] {
+function stageRow(outcome: BankOutcome, group: StageGroup, at: number): string[] {
   const stage = outcome.result.bank.stages.find(
     (one) => one.ratedKvar === group.ratedKvar && one.ratedV === group.ratedV && one.reactorPct === group.reactorPct,
   );
@@ -56,14 +56,14 @@ function stageRow(outcome: Outcome, group: StageGroup, at: number): string[] {
   ];
 }
 
-function levelWords({ result }: Outcome): string {
+function levelWords({ result }: BankOutcome): string {
   const levels = result.bank.levelsKvar.map((kvar) => formatNumber(kvar));
   const listed =
     levels.length <= 24 ? levels.join(', ') : `${levels.slice(0, 12).join(', ')} … ${levels.slice(-4).join(', ')}`;
   return `${levels.length} levels, kvar: ${listed}.`;
 }
 
-function drawControl(paper: Paper, { result }: Outcome): void {
+function drawControl(paper: Paper, { result }: BankOutcome): void {
   const { control } = result;
   const modes = { nearestLevel: 'nearest level', oneByOne: 'one by one' };
   const wear = { even: 'by turns', inOrder: 'in order' };
@@ -74,7 +74,7 @@ function drawControl(paper: Paper, { result }: Outcome): void {
   ]);
 }
 
-function drawDischarge(paper: Paper, outcome: Outcome): void {
+function drawDischarge(paper: Paper, outcome: BankOutcome): void {
   const { bank, result } = outcome;
   const waits = bank.groups.map((group, at) => waitS(outcome, group, at));
   const longest = Math.max(...waits);
@@ -111,7 +111,7 @@ function drawDischarge(paper: Paper, outcome: Outcome): void {
 }
 
 /** The standard's time, or the fitted resistor's own where that is longer. */
-function waitS(outcome: Outcome, group: StageGroup, at: number): number {
+function waitS(outcome: BankOutcome, group: StageGroup, at: number): number {
   const stage = outcome.result.charge.stages[at]!;
   const fitted =
     group.dischargeOhm === null

@@ -42,11 +42,12 @@ export class Revision {
 
   @Index('revision_record')
   @ForeignKey(() => StoredRecord, { name: 'revision_record_fk' })
-  @Column({ type: 'varchar', length: 36 })
-  recordId: string;
+  @Column({ type: 'varchar', length: 36, nullable: true })
+  recordId: string | null;
 
-  @Column({ type: 'varchar', length: 64 })
-  recordHash: string;
+  /** null, as is the record, where the site's own estimate stood in for one */
+  @Column({ type: 'varchar', length: 64, nullable: true })
+  recordHash: string | null;
 
   /** canonical JSON of site, zone table, record hash, kind and engine version: the text the content hash is made from */
   @Column({ type: 'text' })

@@ -7,7 +7,7 @@ import { minuteFile } from '../support/minute-file.js';
 import { startServer, type TestServer } from '../support/test-server.js';
 import { meterFile, siteFile } from './site-builder.js';
 
-/** Nine months of minutes: 15 MB. */
+/** Nine months of minutes: 17 MB. */
 const LARGE = minuteFile(400_000);
 
 for (const { name, available, create } of databases) {

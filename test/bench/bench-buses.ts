@@ -1,6 +1,7 @@
 import {
   type BusColumns,
   busColumns,
+  type ComplexColumn,
   invertInto,
   type NetworkScene,
   networkColumns,
@@ -44,13 +45,15 @@ function scanOf(what: string, buses: number, limit: number): TwinWork {
     title: `scan of ${what} of ${BUSES}, ${LEVELS} levels, ${CORNERS} corners, ${ORDERS} orders, factorised at every point`,
     twin: 'buses',
     limit,
-    runs: 3,
+    runs: 5,
     input: twinInput(scene, { buses, ordersH, counts, stageAt }),
     ours: () => {
-      const columns = new Map<number, BusColumns[]>();
+      const columns: BusColumns[][] = [];
+      const stages: ComplexColumn[] = [];
       for (const [k, { network, factors }] of corners.entries()) {
-        if (!columns.has(network)) columns.set(network, columnsOf(network));
-        scanBusesInto(columns.get(network)!, stageAt(factors), counts, output.subarray(k * size, (k + 1) * size));
+        columns[network] ??= columnsOf(network);
+        stages[factors] ??= stageAt(factors);
+        scanBusesInto(columns[network], stages[factors], counts, output.subarray(k * size, (k + 1) * size));
       }
     },
     output: () => output,

@@ -20,7 +20,7 @@ export function scanWork(): TwinWork {
   return {
     title: `scan of ${LEVELS} levels, ${CORNERS} corners, ${ORDERS} orders`,
     twin: 'scan',
-    limit: 6,
+    limit: 1.5,
     runs: 40,
     input: Float64Array.from([
       ORDERS,

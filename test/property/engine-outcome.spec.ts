@@ -31,7 +31,8 @@ function madeCase(seed: number, parts: Partial<Site> = {}): Outcome {
   });
   const columns = driftingLoad(random, 60, random.between(100, 600), 0.9);
   const activeKw = columns.activeKw.map((kw) => (random.next() < 0.1 ? -kw : kw));
-  return assessBank(site, madeRecord({ ...columns, activeKw }), UTC_TABLE);
+  // five hours each: twelve days and a half, enough to be planned on
+  return assessBank(site, madeRecord({ ...columns, activeKw, intervalS: 18_000 }), UTC_TABLE);
 }
 
 const seeds = Array.from({ length: runs(12, 400) }, (_, k) => SEED + k);

@@ -7,8 +7,11 @@ import { madeSite } from '../support/made-site.js';
 const tuned = { count: 2, ratedKvar: 25, ratedV: 525, reactorPct: 7 };
 const plain = { count: 2, ratedKvar: 25, ratedV: 525 };
 
+/** Two of these are the twelve days a record needs to be planned on. */
+const INTERVAL_S = 6 * 86_400;
+
 function assessed(parts: Partial<Site>): Outcome['result'] {
-  const record = madeRecord({ activeKw: [200, 220], reactiveKvar: [120, 130] });
+  const record = madeRecord({ activeKw: [200, 220], reactiveKvar: [120, 130], intervalS: INTERVAL_S });
   return assessBank(madeSite({ bank: { stages: [tuned], interStageUh: 20 }, ...parts }), record, UTC_TABLE).result;
 }
 
@@ -41,7 +44,7 @@ describe('what is not known', () => {
   });
 
   it('no bank at all has nothing that could be watched', () => {
-    const record = madeRecord({ activeKw: [200], reactiveKvar: [0] });
+    const record = madeRecord({ activeKw: [200], reactiveKvar: [0], intervalS: 2 * INTERVAL_S });
     const { result } = assessBank(madeSite({ loads: {}, bank: { stages: [] } }), record, UTC_TABLE);
     expect(result.verdict).toBe('clear');
   });

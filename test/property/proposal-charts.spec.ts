@@ -9,7 +9,9 @@ import { marginMap } from '#libs/present/margin-map.js';
 import { phasors } from '#libs/present/phasors.js';
 import { powerFactorByMonth } from '#libs/present/power-factor-by-month.js';
 import { singleLine } from '#libs/present/single-line.js';
-import { recordReport, resultReport, scanReport } from '#libs/present/terminal-report.js';
+import { qualityOf } from '#libs/meter-files/record/quality.js';
+import { scanReport } from '#libs/present/scan-report.js';
+import { recordReport, resultReport } from '#libs/present/terminal-report.js';
 import { worstDay } from '#libs/present/worst-day.js';
 import { generatedCase } from '../support/generated-site.js';
 import { MADE_BANK, MADE_PLAIN_BANK, madeOutcome, madeSite } from '../support/outcome.js';
@@ -208,7 +210,14 @@ describe('the report for a terminal', () => {
   });
 
   it('reports a record by itself', () => {
-    expect(recordReport(detuned.result.record)).toContain('5\u00a0760 of 15\u00a0min, 0 missing');
+    const { record, zone } = detuned;
+    const counts = { format: 'csv', rowsRead: record.beginS.length, rejectedRows: 0 };
+    const basis = { measured: record, repair: { method: 'none', upToS: null } as const, suspectZeros: [] };
+    const report = recordReport(detuned.result.record, qualityOf(record, counts, zone, basis));
+    expect(report).toContain('5\u00a0760 of 15\u00a0min, 0 missing');
+    expect(report).toContain('limited: it says little of the rest of the year');
+    expect(report).toMatch(/60\sdays\sare\smeasured;\s+usable\sasks\sfor\s85\sdays/);
+    expect(report).toMatch(/month +expected +valid +repaired +covered/);
   });
 });
 

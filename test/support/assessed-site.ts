@@ -4,8 +4,8 @@ import { driftingLoad, madeRecord } from './made-record.js';
 import { madeSite } from './made-site.js';
 import { SEED } from './soak.js';
 
-/** A day of a drifting load around 300 kW; invented. */
-export const RECORD = madeRecord(driftingLoad(chance(SEED), 96, 300, 0.9));
+/** Twelve days of a drifting load around 300 kW, long enough to be planned on; invented. */
+export const RECORD = madeRecord({ ...driftingLoad(chance(SEED), 96, 300, 0.9), intervalS: 10_800 });
 
 /** Two groups with 7 % reactors. */
 export const BANK: BankInput = {

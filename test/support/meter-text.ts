@@ -7,7 +7,7 @@ import { readMeterFile } from '#libs/meter-files/read-meter-file.js';
 export async function* streamOf(content: string | Uint8Array, chunkBytes = 65_536): AsyncGenerator<Uint8Array> {
   const bytes = typeof content === 'string' ? new TextEncoder().encode(content) : content;
   for (let at = 0; at < bytes.length; at += chunkBytes) {
-    const chunk = bytes.slice(at, at + chunkBytes);
+    const chunk = new Uint8Array(bytes.subarray(at, at + chunkBytes));
     yield chunk;
     chunk.fill(0);
   }

@@ -47,7 +47,14 @@ export function sampleParquet(): SampleFile[] {
     logical: undefined,
     values: stamps.values.map((ms) => new Date(ms as number).toISOString().slice(0, 16)),
   };
+  const mark: MadeColumn = {
+    name: 'mark',
+    type: 'FIXED_LEN_BYTE_ARRAY',
+    length: 2,
+    values: each((row) => Uint8Array.of(row, 0)),
+  };
   return [
+    { name: 'a column of marks, left out', bytes: madeParquet({ columns: [mark, stamps, ...loads] }) },
     { name: 'pages of the second kind, packed', bytes: new Uint8Array(written) },
     { name: 'plain pages of the first kind', bytes: madeParquet({ columns: [stamps, ...loads] }) },
     {

@@ -1,4 +1,4 @@
-import type { Result, Verdict } from '#libs/engine/index.js';
+import type { EstimateResult, Result, Verdict } from '#libs/engine/index.js';
 import { formatNumber, formatQuantity } from '#libs/present/format-number.js';
 import { formatMonth } from '#libs/present/local-stamp.js';
 import { NO_PERMISSION, VERDICT_WORDS } from '#libs/present/verdict-words.js';
@@ -57,10 +57,10 @@ function revisionParts(revision: ShownRevision): Html[] {
     html`<p>${proposed}</p>
 <p>${verdictMark(result.verdict)}</p>
 <p class="soft">${NO_PERMISSION}</p>`,
-    keyFigures(result),
+    result.record === null ? estimatedFigures(result) : keyFigures(result),
     rivalWords(revision),
     reasonList(result),
-    monthTable(result),
+    result.record === null ? leftOut(result) : monthTable(result),
     linkList(revision),
   ].filter((part) => part !== null);
 }
@@ -86,11 +86,38 @@ function keyFigures({ requirement, bank, record, operation, control }: Result): 
     ['with the bank, worst month', factor(after.length === 0 ? null : Math.min(...after)), ''],
     ['target, set point', `${requirement.targetPowerFactor.toFixed(2)}, ${control.setPointPowerFactor.toFixed(2)}`, ''],
   ];
-  const items = rows.map(
+  return html`<section aria-labelledby="need"><h2 id="need">${needWords(requirement.maxKvar)}</h2><dl>${figureItems(rows)}</dl></section>`;
+}
+
+function figureItems(rows: readonly [string, string, string][]): Html[] {
+  return rows.map(
     ([name, value, unit]) =>
       html`<div><dt>${name}</dt><dd>${value}${unit === '' ? null : html` <small>${unit}</small>`}</dd></div>`,
   );
-  return html`<section aria-labelledby="need"><h2 id="need">${needWords(requirement.maxKvar)}</h2><dl>${items}</dl></section>`;
+}
+
+function estimatedFigures({ requirement, bank, estimate, control }: EstimateResult): Html {
+  const { lowerKvar, upperKvar, listKvar, targetPowerFactor } = requirement;
+  const bounds: [string, number | null][] = [
+    ['needed, lower bound', lowerKvar],
+    ['needed, upper bound', upperKvar],
+    ['needed by the equipment list', listKvar],
+    ['the bank gives', bank.effectiveKvar],
+  ];
+  const rows = bounds.flatMap(([name, kvar]): [string, string, string][] =>
+    kvar === null ? [] : [[name, formatNumber(kvar), 'kvar']],
+  );
+  const target: [string, string, string] = [
+    'target, set point',
+    `${targetPowerFactor.toFixed(2)}, ${control.setPointPowerFactor.toFixed(2)}`,
+    '',
+  ];
+  return html`<section aria-labelledby="need"><h2 id="need">An estimate from ${estimate.basis}, without a meter’s record</h2><dl>${figureItems([...rows, target])}</dl></section>`;
+}
+
+function leftOut({ estimate }: EstimateResult): Html {
+  const items = estimate.refused.map(({ text }) => html`<li>${text}</li>`);
+  return html`<section aria-labelledby="left"><h2 id="left">Left out, since an estimate can’t support it</h2><ul>${items}</ul></section>`;
 }
 
 function needWords(maxKvar: number): string {
@@ -116,7 +143,7 @@ function rivalWords({ rival, distorting, result }: ShownRevision): Html | null {
 <p>${name}: ${verdictMark(verdict)}</p><p>${rings} ${levelsOver > 0 && result.verdict === 'clear' ? 'The bank proposed does not.' : null}</p></section>`;
 }
 
-function reasonList({ reasons }: Result): Html | null {
+function reasonList({ reasons }: Pick<Result, 'reasons'>): Html | null {
   if (reasons.length === 0) return null;
   return html`<section aria-labelledby="why"><h2 id="why">Why</h2><ul>${reasons.map(({ text }) => html`<li>${text}</li>`)}</ul></section>`;
 }
@@ -137,7 +164,7 @@ function linkList({ siteId, revision, recordId, kind, number }: ShownRevision): 
   const links: [string, string][] = [
     [`Proposal ${number}, revision ${revision} (PDF)`, `${site}/revisions/${revision}/proposal.pdf`],
     [`${kind === 'plan' ? 'Plan' : 'Assessment'} as JSON`, `${site}/revisions/${revision}`],
-    ['Load record as JSON', `${site}/records/${recordId}`],
+    ...(recordId === null ? [] : [['Load record as JSON', `${site}/records/${recordId}`] satisfies [string, string]]),
     ['Site file as JSON', site],
     ['All revisions', `${site}/revisions`],
   ];

@@ -1,4 +1,4 @@
-import type { Result } from '#libs/engine/index.js';
+import type { EstimateResult, Result } from '#libs/engine/index.js';
 import { Job } from '#libs/store/job.js';
 import { Revision } from '#libs/store/revision.js';
 import type { Store } from '#libs/store/store.js';
@@ -7,7 +7,7 @@ import { StoredSite } from '#libs/store/stored-site.js';
 
 /** A revision with its result read. */
 export interface ShownRevision extends Omit<Revision, 'result' | 'inputs'> {
-  result: Result;
+  result: Result | EstimateResult;
   /** names of the loads that inject harmonic current */
   distorting: string[];
 }
@@ -44,5 +44,5 @@ export async function siteView(store: Store, siteId?: string): Promise<SiteView>
 function shown({ result, inputs, ...rest }: Revision): ShownRevision {
   const { site } = JSON.parse(inputs) as { site: { loads?: { distorting?: { name: string }[] } } };
   const distorting = (site.loads?.distorting ?? []).map(({ name }) => name);
-  return { ...rest, result: JSON.parse(result) as Result, distorting };
+  return { ...rest, result: JSON.parse(result) as ShownRevision['result'], distorting };
 }

@@ -1,18 +1,25 @@
 import type { MessagePort } from 'node:worker_threads';
 import {
   assessBank,
+  assessEstimate,
+  type BankOutcome,
+  type EstimateOutcome,
+  type EstimateResult,
+  isEstimate,
   type LoadRecord,
   type Outcome,
   planBank,
+  planEstimate,
   type Result,
   type Site,
+  type Watch,
   withRobustness,
   type ZoneTable,
 } from '#libs/engine/index.js';
 import { portWatch } from '#libs/jobs/pool/port-watch.js';
 import { packAnswer, type WorkerAnswer } from '#libs/jobs/pool/worker-answer.js';
-import { bankName, proposedWords } from '#libs/present/proposed-words.js';
-import { putInWords } from '#libs/present/put-in-words.js';
+import { bankName, estimateWords, proposedWords } from '#libs/present/proposed-words.js';
+import { putEstimateInWords, putInWords } from '#libs/present/put-in-words.js';
 import type { ProposalFrame } from '#libs/proposal/proposal-frame.js';
 import { renderProposal } from '#libs/proposal/render-proposal.js';
 import type { RivalSummary } from '#libs/store/revision.js';
@@ -22,14 +29,15 @@ import { recordHash } from './read-file.js';
 export interface PlanTask {
   kind: 'plan' | 'assess';
   site: Site;
-  record: LoadRecord;
-  recordHash: string;
+  /** null, as is its hash, where the site's own estimate stands in for it */
+  record: LoadRecord | null;
+  recordHash: string | null;
   zone: ZoneTable;
   frame: ProposalFrame;
 }
 
 export interface PlanValue {
-  result: Result;
+  result: Result | EstimateResult;
   /** what is proposed or judged, in one sentence */
   proposed: string;
   rival: RivalSummary | null;
@@ -39,22 +47,30 @@ export interface PlanValue {
 /** Plans or judges a bank and renders the proposal; runs in a worker thread. */
 export function computePlan({ task, port }: { task: PlanTask; port: MessagePort }): Promise<WorkerAnswer<PlanValue>> {
   return packAnswer(async () => {
-    const { site, record, zone } = task;
-    if (recordHash(record) !== task.recordHash) throw new Error('the stored record is not the one that was hashed');
-    const watch = portWatch(port);
-    const judged = task.kind === 'plan' ? planBank(site, record, zone, watch) : assessBank(site, record, zone, watch);
-    const computed = withRobustness(judged);
-    const outcome = { ...computed, result: putInWords(computed.result) };
+    const { record } = task;
+    const outcome = record === null ? byEstimate(task) : byRecord(task, record, portWatch(port));
     return {
       result: outcome.result,
-      proposed: proposedWords(outcome),
+      proposed: isEstimate(outcome) ? estimateWords(outcome) : proposedWords(outcome),
       rival: rivalSummary(outcome),
       proposal: await renderProposal(outcome, task.frame),
     };
   });
 }
 
-function rivalSummary({ rival }: Outcome): RivalSummary | null {
+function byRecord(task: PlanTask, record: LoadRecord, watch: Watch): Outcome {
+  if (recordHash(record) !== task.recordHash) throw new Error('the stored record is not the one that was hashed');
+  const judge = task.kind === 'plan' ? planBank : assessBank;
+  const computed = withRobustness(judge(task.site, record, task.zone, watch));
+  return { ...computed, result: putInWords(computed.result) };
+}
+
+function byEstimate({ kind, site, zone }: PlanTask): EstimateOutcome {
+  const computed = withRobustness((kind === 'plan' ? planEstimate : assessEstimate)(site, zone));
+  return { ...computed, result: putEstimateInWords(computed.result) };
+}
+
+function rivalSummary({ rival }: BankOutcome): RivalSummary | null {
   if (rival === null) return null;
   const { bank, verdict, levelsOver, levelsAll } = rival;
   return { name: bankName(bank.groups), verdict, levelsOver, levelsAll };

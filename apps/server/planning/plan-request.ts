@@ -6,8 +6,9 @@ export interface FrozenPlan {
   /** as given, validated, `asOf` filled in */
   site: Site;
   zone: ZoneTable;
-  recordId: string;
-  recordHash: string;
+  /** both null where the site's own estimate stands in for a record */
+  recordId: string | null;
+  recordHash: string | null;
   author: string | null;
   reason: string | null;
 }

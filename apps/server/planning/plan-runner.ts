@@ -22,9 +22,10 @@ import { contentOf } from './planning.js';
 export function planRunner(store: Store, pool: WorkerPool): Runner {
   return async (job, hands) => {
     const frozen = job.request as FrozenPlan;
-    const record = await store.read((manager) => readRecord(manager, frozen.recordId));
+    const { recordId } = frozen;
+    const record = recordId === null ? null : await store.read((manager) => readRecord(manager, recordId));
     // It can be removed while the job waits; then the job's end is a refusal, not a fault.
-    if (record === null) throw noSite(`record ${frozen.recordId}`);
+    if (record === null && recordId !== null) throw noSite(`record ${recordId}`);
     while (!(await attempt({ store, pool, job, frozen, record }, hands))) {
       // Another revision took the number this proposal was made for: make it again for the next one.
     }
@@ -36,7 +37,7 @@ interface Work {
   pool: WorkerPool;
   job: Job;
   frozen: FrozenPlan;
-  record: LoadRecord;
+  record: LoadRecord | null;
 }
 
 /** @returns false where the revision's number was taken meanwhile */

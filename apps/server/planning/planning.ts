@@ -1,5 +1,6 @@
 import { createHash } from 'node:crypto';
 import { Inject, Injectable } from '@nestjs/common';
+import { estimateZone } from '#libs/contract/estimate-zone.js';
 import { frozenSite } from '#libs/contract/frozen-site.js';
 import { planContent } from '#libs/contract/plan-content.js';
 import type { PlanRequest } from '#libs/contract/plan-request-schema.js';
@@ -25,7 +26,7 @@ export class Planning {
   ) {}
 
   /**
-   * Asks for a plan or an assessment of the site as it stands now.
+   * Asks for a plan or an assessment of the site as it stands now, by its latest record, or its estimate without one.
    * @returns the revision where equal inputs have led to one already, else the job that will make it
    * @throws InputProblem where the site, the record or the bank to judge is missing
    */
@@ -35,13 +36,14 @@ export class Planning {
       throw new InputProblem([{ code: 'missing', path: 'bank', expected: 'the bank to judge', found: 'nothing' }]);
     }
     const record = await this.#recordOf(stored.id, request.recordId);
-    const zone = zoneTableOf(site.timeZone, record);
+    if (record === null && site.estimate === undefined) throw nothingToPlanWith();
+    const zone = record === null ? estimateZone(site) : zoneTableOf(site.timeZone, record);
     const frozen: FrozenPlan = {
       kind,
       site,
       zone,
-      recordId: record.id,
-      recordHash: record.hash,
+      recordId: record?.id ?? null,
+      recordHash: record?.hash ?? null,
       author: request.author ?? null,
       reason: request.reason ?? null,
     };
@@ -59,14 +61,12 @@ export class Planning {
     });
   }
 
-  async #recordOf(siteId: string, recordId: string | undefined): Promise<StoredRecord> {
+  async #recordOf(siteId: string, recordId: string | undefined): Promise<StoredRecord | null> {
     if (recordId !== undefined) return findRecord(this.store, siteId, recordId);
     const [latest] = await this.store.read((manager) =>
       manager.find(StoredRecord, { where: { siteId }, order: { createdAt: 'DESC', id: 'ASC' }, take: 1 }),
     );
-    if (latest !== undefined) return latest;
-    const expected = 'a load record of this site: upload a meter file first';
-    throw new InputProblem([{ code: 'missing', path: 'recordId', expected, found: 'none' }]);
+    return latest ?? null;
   }
 }
 
@@ -74,4 +74,9 @@ export class Planning {
 export function contentOf({ kind, site, recordHash, zone }: FrozenPlan): { text: string; hash: string } {
   const text = planContent({ kind, site, recordHash, zone, engineVersion: ENGINE_VERSION });
   return { text, hash: createHash('sha256').update(text).digest('hex') };
+}
+
+function nothingToPlanWith(): InputProblem {
+  const expected = 'a load record of this site, or an estimate in its site file: upload a meter file first';
+  return new InputProblem([{ code: 'missing', path: 'recordId', expected, found: 'none' }]);
 }

@@ -13,7 +13,7 @@ import type { MeterReading } from '#libs/meter-files/meter-format.js';
 import { note } from '#libs/meter-files/note.js';
 import { readMeterFile } from '#libs/meter-files/read-meter-file.js';
 import { extendRecord } from '#libs/meter-files/record/extend-record.js';
-import { recordInWords } from '#libs/present/put-in-words.js';
+import { qualityInWords, recordInWords } from '#libs/present/put-in-words.js';
 import { type MonthColumn, packRecord } from '#libs/store/pack-record.js';
 
 /** A meter file on disk and what is said about it. */
@@ -66,7 +66,7 @@ async function readTask({ path, kept, earlier, ...options }: ReadTask, port: Mes
   if (reading === earlier) return { unchanged: true as const };
   const { record, quality } = reading;
   const summary = recordInWords(summarizeRecord(record));
-  return { record, quality, summary, hash: recordHash(record), columns: packRecord(record) };
+  return { record, quality: qualityInWords(quality), summary, hash: recordHash(record), columns: packRecord(record) };
 }
 
 function noted(record: LoadRecord, kept: { name: string; version: number }): LoadRecord {

@@ -8,7 +8,7 @@ export function revisionHead(revision: Revision) {
   return {
     ...{ siteId, number, revision: count, kind, verdict, createdAt, author, reason, proposed },
     ...{ recordId, recordHash, engineVersion, contentHash },
-    links: { self, proposal: `${self}/proposal.pdf`, record: `/api/sites/${siteId}/records/${recordId}` },
+    links: { self, proposal: `${self}/proposal.pdf`, record: recordId && `/api/sites/${siteId}/records/${recordId}` },
   };
 }
 

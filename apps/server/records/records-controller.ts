@@ -1,5 +1,6 @@
 import { Controller, Delete, Get, HttpCode, Param, Post, Req, Res } from '@nestjs/common';
 import type { FastifyReply, FastifyRequest } from 'fastify';
+import { readSiteWithMathjs } from '#libs/contract/read-site-with-mathjs.js';
 import { InputProblem } from '#libs/engine/index.js';
 import { recordColumns } from '#libs/meter-files/record-columns.js';
 import { readRecord } from '#libs/store/records.js';
@@ -23,11 +24,12 @@ export class RecordsController {
   @Get()
   @Public('Lists the load records of a site, the latest first.')
   async list(@Param('siteId') siteId: string) {
-    const { id } = await findSite(this.store, siteId);
+    const { id, document } = await findSite(this.store, siteId);
     const records = await this.store.read((manager) =>
       manager.find(StoredRecord, { where: { siteId: id }, order: { createdAt: 'DESC', id: 'ASC' } }),
     );
-    return { records: records.map(showRecord) };
+    const site = await readSiteWithMathjs(document);
+    return { records: records.map((record) => showRecord(record, site)) };
   }
 
   @Post()
@@ -43,15 +45,19 @@ export class RecordsController {
   @Get(':recordId')
   @Public('Gives a load record: what was read, from which file, in what quality.')
   async get(@Param('siteId') siteId: string, @Param('recordId') recordId: string) {
-    return showRecord(await findRecord(this.store, siteId, recordId));
+    const { id, document } = await findSite(this.store, siteId);
+    const record = await findRecord(this.store, id, recordId);
+    return showRecord(record, await readSiteWithMathjs(document));
   }
 
   @Get(':recordId/revisions')
   @Public('Lists the revisions of a load record up to the latest, which comes first.')
   async revisions(@Param('siteId') siteId: string, @Param('recordId') recordId: string) {
-    const record = await findRecord(this.store, siteId, recordId);
-    const all = await this.store.read((manager) => manager.findBy(StoredRecord, { siteId: record.siteId }));
-    return { records: lineOf(record, all).map(showRecord) };
+    const { id, document } = await findSite(this.store, siteId);
+    const record = await findRecord(this.store, id, recordId);
+    const all = await this.store.read((manager) => manager.findBy(StoredRecord, { siteId: id }));
+    const site = await readSiteWithMathjs(document);
+    return { records: lineOf(record, all).map((revision) => showRecord(revision, site)) };
   }
 
   @Post(':recordId/revisions')

@@ -1,5 +1,6 @@
 import { Inject, Injectable } from '@nestjs/common';
 import type { FastifyReply, FastifyRequest } from 'fastify';
+import { readSiteWithMathjs } from '#libs/contract/read-site-with-mathjs.js';
 import type { Jobs } from '#libs/jobs/jobs.js';
 import type { Job } from '#libs/store/job.js';
 import { Store } from '#libs/store/store.js';
@@ -13,6 +14,12 @@ import { type ImportOrder, RecordImport } from './record-import.js';
 import { showRecord } from './show-record.js';
 import { Spool, type SpooledFile } from './spool.js';
 import { readUploadOptions } from './upload-options.js';
+
+/** The site a record is for, and the record it extends. */
+interface Beside {
+  site: StoredSite;
+  previous: StoredRecord | null;
+}
 
 /** Takes a meter file from a request to a record: at once, or as a job that whoever sent it may follow. */
 @Injectable()
@@ -39,11 +46,11 @@ export class UploadIntake {
       file = upload.file;
       const options = { ...fromQuery, ...readUploadOptions(upload.fields) };
       const order = await this.importer.order(site, file, options, previous?.id ?? null);
-      if (options.waitS === undefined) return await this.#show(await this.#readNow(order), previous, reply);
+      if (options.waitS === undefined) return await this.#show(await this.#readNow(order), { site, previous }, reply);
       const asked = await this.jobs.submit(importRequest(this.spool, order));
       // The same file was being read already; else it is the job's from here on.
       if ((asked.request as FrozenImport).file.place === this.spool.placeOf(file)) file = null;
-      return await this.#follow(await this.jobs.result(asked.id, options.waitS), previous, reply);
+      return await this.#follow(await this.jobs.result(asked.id, options.waitS), { site, previous }, reply);
     } finally {
       await this.spool.discard(file);
     }
@@ -54,12 +61,12 @@ export class UploadIntake {
     return this.store.write((manager) => this.importer.insert(manager, read));
   }
 
-  async #follow(job: Job, previous: StoredRecord | null, reply: FastifyReply) {
+  async #follow(job: Job, beside: Beside, reply: FastifyReply) {
     if (job.state === 'done') {
       const { recordId: id } = job;
       return this.#show(
         await this.store.read((manager) => manager.findOneByOrFail(StoredRecord, { id: id! })),
-        previous,
+        beside,
         reply,
       );
     }
@@ -69,9 +76,10 @@ export class UploadIntake {
   }
 
   /** Answers that would have fitted are named beside the record: none was taken that the sender did not name. */
-  async #show(record: StoredRecord, previous: StoredRecord | null, reply: FastifyReply) {
+  async #show(record: StoredRecord, { site, previous }: Beside, reply: FastifyReply) {
     reply.status(record.id === previous?.id ? 200 : 201);
     reply.header('location', `/api/sites/${record.siteId}/records/${record.id}`);
-    return { ...showRecord(record), offered: await this.importer.offeredFor(record.fileHeader) };
+    const shown = showRecord(record, await readSiteWithMathjs(site.document));
+    return { ...shown, offered: await this.importer.offeredFor(record.fileHeader) };
   }
 }

@@ -1,6 +1,7 @@
 import type { ProblemJson } from '#libs/contract/error-body.js';
 import type { MeterMap } from '#libs/contract/meter-map.js';
-import type { RecordSummary, Remark, Result, Verdict } from '#libs/engine/index.js';
+import type { EstimateResult, RecordSummary, Remark, Result, Verdict } from '#libs/engine/index.js';
+import type { QualityStated } from '#libs/present/quality-words.js';
 
 /** A site file as JSON: what was typed into it, units and all. */
 export type SiteDocument = Record<string, unknown> & { name: string; timeZone: string };
@@ -21,20 +22,6 @@ export interface SiteListed extends Omit<SiteShown, 'site'> {
   latest: { revision: number; verdict: Verdict; proposed: string; createdAt: string } | null;
 }
 
-/** How good the file behind a record was. */
-export interface QualityShown {
-  format: string;
-  rowsRead: number;
-  intervalsExpected: number;
-  missingSpanCount: number;
-  missingSpans: { beginS: number; endS: number; intervals: number }[];
-  duplicates: number;
-  repaired: number;
-  rejectedRows: number;
-  seasonsMissing: string[];
-  grade: 'full' | 'usable' | 'limited' | 'insufficient';
-}
-
 /** A load record as the API gives it. */
 export interface RecordShown {
   id: string;
@@ -45,7 +32,9 @@ export interface RecordShown {
   hash: string;
   file: { name: string | null; sha256: string; bytes: number; header: string | null };
   record: RecordSummary;
-  quality: QualityShown;
+  quality: QualityStated;
+  /** how the record's peak stands against the site's transformers, as they are now */
+  againstSupply: Remark[];
   createdAt: string;
 }
 
@@ -60,17 +49,18 @@ export interface RevisionHeadShown {
   author: string | null;
   reason: string | null;
   proposed: string;
-  recordId: string;
+  /** null where the site's own estimate stood in for a record */
+  recordId: string | null;
   engineVersion: string;
   contentHash: string;
-  links: { self: string; proposal: string; record: string };
+  links: { self: string; proposal: string; record: string | null };
 }
 
 /** A revision in full. */
 export interface RevisionShown extends RevisionHeadShown {
   rival: { name: string; verdict: Verdict; levelsOver: number; levelsAll: number } | null;
   inputs: { site: SiteDocument };
-  result: Result;
+  result: Result | EstimateResult;
 }
 
 /** A job as the API gives it. */

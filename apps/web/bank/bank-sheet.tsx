@@ -39,17 +39,19 @@ export function BankSheet() {
           { value: control.setPointPowerFactor, under: 'set point', digits: 'given' },
           {
             value: operation.totalSwitchings,
-            under: isTrial
-              ? `switchings; kept: ${formatNumber(kept.result.operation.totalSwitchings, 'whole')}`
-              : 'switchings',
+            under:
+              isTrial && kept.result.operation !== null
+                ? `switchings; kept: ${formatNumber(kept.result.operation.totalSwitchings, 'whole')}`
+                : 'switchings',
             digits: 'whole',
           },
           {
             value: operation.shareInTargetPct,
             unit: '%',
-            under: isTrial
-              ? `in target; kept: ${formatQuantity(kept.result.operation.shareInTargetPct, '%')}`
-              : 'of the record in target',
+            under:
+              isTrial && kept.result.operation !== null
+                ? `in target; kept: ${formatQuantity(kept.result.operation.shareInTargetPct, '%')}`
+                : 'of the record in target',
           },
         ]}
       >

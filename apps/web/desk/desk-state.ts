@@ -1,4 +1,10 @@
-import type { BankInput, Problem, StageGroupInput } from '#libs/engine/index.js';
+import {
+  type BankInput,
+  type MonthlyBill,
+  type Problem,
+  type StageGroupInput,
+  tanFromPowerFactor,
+} from '#libs/engine/index.js';
 import type { Station } from '../address.js';
 import type { JobShown, RecordShown, RevisionHeadShown, RevisionShown, SiteDocument, SiteShown } from '../api/shown.js';
 import { valueAt } from '../field/document-path.js';
@@ -97,7 +103,7 @@ export function isChanged({ site, document, trial, typed }: DeskState): boolean 
 
 /** Keys of the site file by the station at which they are entered, left to right. */
 const STATION_KEYS: [Station, readonly string[]][] = [
-  ['record', ['timeZone', 'recordedBank']],
+  ['record', ['timeZone', 'recordedBank', 'estimate']],
   ['supply', ['bus', 'supply', 'loads', 'limits', 'rules', 'frequencyHz', 'meteredAt']],
   ['need', ['target']],
   ['bank', ['control', 'catalogue', 'bank']],
@@ -113,7 +119,8 @@ export function staleFrom(state: DeskState): Station | null {
   if (kept === null || document === null) return null;
   if (records[0] !== undefined && records[0].id !== kept.recordId) return 'record';
   const frozen = kept.inputs.site;
-  const differs = (key: string) => JSON.stringify(canonical(frozen[key])) !== JSON.stringify(canonical(document[key]));
+  const differs = (key: string) =>
+    JSON.stringify(canonical(frozen[key])) !== JSON.stringify(canonical(asFrozen(key, document[key])));
   for (const [station, keys] of STATION_KEYS) {
     if (
       keys.some((key) => (key === 'bank' ? trial !== null || (kept.kind === 'assess' && differs(key)) : differs(key)))
@@ -122,6 +129,20 @@ export function staleFrom(state: DeskState): Station | null {
     }
   }
   return null;
+}
+
+/** What is typed in the form it is frozen in: a bill's power factor as kvarh. */
+function asFrozen(key: string, part: unknown): unknown {
+  if (key !== 'estimate' || part === null || typeof part !== 'object') return part;
+  const { bills, ...rest } = part as { bills?: (Partial<MonthlyBill> & { powerFactor?: number })[] };
+  if (!Array.isArray(bills)) return part;
+  return {
+    ...rest,
+    bills: bills.map(({ powerFactor, ...bill }) => {
+      if (bill.laggingKvarh !== undefined || powerFactor === undefined || bill.activeKwh === undefined) return bill;
+      return { ...bill, laggingKvarh: bill.activeKwh * tanFromPowerFactor(powerFactor) };
+    }),
+  };
 }
 
 /** The same with its keys sorted: the server froze them so. */

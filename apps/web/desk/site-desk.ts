@@ -106,7 +106,7 @@ export class SiteDesk {
    * @param kind judge the bank as it stands, or design one
    */
   async keep(kind: 'plan' | 'assess'): Promise<void> {
-    this.#set({ saving: true, problems: [] });
+    this.#set({ saving: true, problems: [], fault: null });
     try {
       if (isChanged(this.#state)) await this.#save(kind);
       const way = kind === 'plan' ? 'plans' : 'assessments';

@@ -1,9 +1,10 @@
 import { useState } from 'react';
-import type { Remark, Result } from '#libs/engine/index.js';
+import type { EstimateResult, Remark, Result } from '#libs/engine/index.js';
 import { formatQuantity, formatRange } from '#libs/present/format-number.js';
 import { messageOf, remarkConsequence } from '#libs/present/remark-words.js';
 import { siteAddress, stationOfPath } from '../address.js';
 import { useDesk } from '../desk/use-desk.js';
+import { keptEstimate } from './kept-estimate.js';
 import { latestResult } from './latest-result.js';
 
 /** One thing the plan rests on. */
@@ -21,7 +22,7 @@ interface Point {
 export function OpenPoints({ siteId }: { siteId: string }) {
   const { state } = useDesk();
   const [isUnfolded, setUnfolded] = useState(false);
-  const result = latestResult(state);
+  const result = latestResult(state) ?? keptEstimate(state);
   const points = result === null ? [] : openPoints(result);
   const most = Math.max(0, ...points.map(({ spread }) => spread ?? 0));
   const deciding = points.filter(({ effect }) => effect === DECIDES).length;
@@ -96,7 +97,7 @@ function EarthSymbol() {
 const DECIDES = 'Could change the verdict';
 
 /** Reasons, then the record's notes, then assumptions; those with a computed effect by its size. */
-export function openPoints({ reasons, record, assumptions, duties }: Result): Point[] {
+export function openPoints({ reasons, record, assumptions, duties }: Result | EstimateResult): Point[] {
   const open = duties.filter(({ verdict }) => verdict === null).length;
   const unjudged: Point[] =
     open === 0
@@ -112,7 +113,12 @@ export function openPoints({ reasons, record, assumptions, duties }: Result): Po
           },
         ];
   const unsettled = reasons.filter(({ code }) => messageOf(code)?.level !== 'information');
-  const points = [...unsettled.map(pointOf), ...unjudged, ...record.notes.map(pointOf), ...assumptions.map(pointOf)];
+  const points = [
+    ...unsettled.map(pointOf),
+    ...unjudged,
+    ...(record?.notes ?? []).map(pointOf),
+    ...assumptions.map(pointOf),
+  ];
   return points
     .map((point, at) => ({ ...point, key: `${at}:${point.key}` }))
     .sort((a, b) => (b.spread ?? -1) - (a.spread ?? -1));

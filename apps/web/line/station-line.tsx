@@ -6,6 +6,7 @@ import { bankOf, type DeskState, staleFrom } from '../desk/desk-state.js';
 import { useDesk } from '../desk/use-desk.js';
 import { Quantity } from '../draw/quantity.js';
 import { Mark } from '../draw/verdict-mark.js';
+import { keptEstimate } from './kept-estimate.js';
 import { latestResult } from './latest-result.js';
 
 const WORDS: Record<Station, string> = {
@@ -73,23 +74,27 @@ function Deciding({ station, state }: { station: Station; state: DeskState }) {
 
 /** The figure and the line under it; a bare text is a question that is still open. */
 const FIGURES: Record<Station, (state: DeskState) => { figure: ReactNode; third: ReactNode }> = {
-  record: ({ records }) => {
+  record: ({ records, document }) => {
     const record = records[0];
+    if (record === undefined && document?.estimate !== undefined) return { figure: 'estimate', third: 'no meter file' };
     if (record === undefined) return { figure: 'none yet', third: 'drop a meter file' };
     return { figure: <Quantity value={record.record.intervals} digits="given" />, third: 'intervals read' };
   },
   supply: (state) => {
-    const result = latestResult(state);
+    const result = latestResult(state) ?? keptEstimate(state);
     if (result === null) return { figure: 'not computed', third: 'supply, loads' };
     return { figure: <Quantity value={result.network.shortCircuitMva} unit="MVA" />, third: 'at the bus' };
   },
   need: (state) => {
     const result = latestResult(state);
+    const upperKvar = keptEstimate(state)?.requirement.sizedKvar;
+    if (result === null && upperKvar !== undefined)
+      return { figure: <Quantity value={upperKvar} unit="kvar" />, third: 'at most, estimated' };
     if (result === null) return { figure: 'not computed', third: 'kvar to be held' };
     return { figure: <Quantity value={result.requirement.p99Kvar} unit="kvar" />, third: '99\u00a0% of the record' };
   },
   bank: (state) => {
-    const result = latestResult(state);
+    const result = latestResult(state) ?? keptEstimate(state);
     if (result === null || bankOf(state) === null) return { figure: 'none yet', third: 'design one' };
     const count = result.bank.stages.length;
     return {
@@ -98,7 +103,7 @@ const FIGURES: Record<Station, (state: DeskState) => { figure: ReactNode; third:
     };
   },
   network: (state) => {
-    const result = latestResult(state);
+    const result = latestResult(state) ?? keptEstimate(state);
     if (result === null) return { figure: 'not computed', third: 'limits' };
     if (bankOf(state) === null) return { figure: 'not judged', third: 'no bank yet' };
     return {

@@ -4,6 +4,7 @@ import type { RevisionHeadShown } from '../api/shown.js';
 import { isChanged, staleFrom } from '../desk/desk-state.js';
 import { useDesk } from '../desk/use-desk.js';
 import { VerdictWords } from '../draw/verdict-mark.js';
+import { valueAt } from '../field/document-path.js';
 import { Headline } from '../working/headline.js';
 import { FindingsList } from './findings-list.js';
 
@@ -11,14 +12,16 @@ import { FindingsList } from './findings-list.js';
 export function ProposalSheet() {
   const { desk, state } = useDesk();
   const { kept, revisions, records, job, saving } = state;
+  const canPlan = records.length > 0 || valueAt(state.document, 'estimate') !== undefined;
   if (kept === null) {
     return (
       <>
         <h1>No proposal yet</h1>
         <p className="row gap">
-          A proposal is made with each plan. {records.length === 0 ? 'A meter record is needed first.' : null}
+          A proposal is made with each plan.{' '}
+          {canPlan ? null : 'A meter record, or bills or equipment, are needed first.'}
         </p>
-        {records.length === 0 ? null : (
+        {!canPlan ? null : (
           <p className="row gap">
             <button
               type="button"

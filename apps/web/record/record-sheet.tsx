@@ -7,6 +7,7 @@ import { valueAt } from '../field/document-path.js';
 import { QuantityField } from '../field/quantity-field.js';
 import { TextField } from '../field/text-field.js';
 import { Headline } from '../working/headline.js';
+import { EstimateFields } from './estimate-fields.js';
 import { MeterFileDrop } from './meter-file-drop.js';
 import { ReadingFindings } from './reading-findings.js';
 import { RecordRevisions } from './record-revisions.js';
@@ -22,7 +23,7 @@ export function RecordSheet() {
     <>
       {record === undefined ? (
         <div className="headline">
-          <h1>Drop a meter file, and the year is read from it.</h1>
+          <h1>Drop a meter file, and the year is read from it; or enter bills or equipment below.</h1>
         </div>
       ) : (
         <Headline
@@ -69,8 +70,11 @@ export function RecordSheet() {
           </p>
         </section>
       </div>
-      {record === undefined ? null : <ReadingFindings record={record} />}
+      {record === undefined ? null : (
+        <ReadingFindings record={record} timeZone={String(valueAt(state.document, 'timeZone'))} />
+      )}
       {record === undefined ? null : <RecordRevisions record={record} records={state.records} />}
+      {record === undefined || valueAt(state.document, 'estimate') !== undefined ? <EstimateFields /> : null}
     </>
   );
 }

@@ -1,5 +1,6 @@
 import { type ComplexNumber, cAbs, cAdd, cDivide, cMultiply, cSubtract } from '../quantity/complex-number.js';
-import { type ClosingCircuit, LoopImpedance } from './loop-impedance.js';
+import { type ClosingCircuit, LoopImpedance, mergedBranches } from './loop-impedance.js';
+import { NetworkLoop } from './network-loop.js';
 
 /** The greatest current of the closing branch over every closing instant. */
 export interface ClosingPeak {
@@ -25,11 +26,12 @@ const MOST_PERIODS = 10;
  * z(t) = V̂·[e^{jωt}/Z(jω) + Σ_k e^{s_k t}/((s_k − jω)·Z'(s_k))], Z = Z_closing + 1/Y_rest, s_k the zeros of Z.
  * The worst φ at a time t makes i = |z(t)|, so the peak is the greatest |z(t)|: the instant is found, not sampled.
  * @param circuit source, connected branches, closing branch
+ * @param floorA a peak known to be less than this is not looked for; what is returned then is at most this [A]
  * @returns peak [A] and its time
  * @source method-inrush
  */
-export function closingPeak(circuit: ClosingCircuit): ClosingPeak {
-  const loop = new LoopImpedance(circuit);
+export function closingPeak(circuit: ClosingCircuit, floorA = 0): ClosingPeak {
+  const loop = loopOf(circuit);
   const omega = 2 * Math.PI * circuit.frequencyHz;
   const atOmega: ComplexNumber = { re: 0, im: omega };
   const busV = loop.busVoltage(atOmega, circuit.crestV);
@@ -37,9 +39,18 @@ export function closingPeak(circuit: ClosingCircuit): ClosingPeak {
     { s: atOmega, c: cDivide(busV, loop.value(atOmega)) },
     ...loop.zeros().map((s) => ({ s, c: cDivide(busV, cMultiply(cSubtract(s, atOmega), loop.slope(s))) })),
   ];
+  const most = terms.reduce((sum, { c }) => sum + cAbs(c), 0);
+  if (most <= floorA) return { peakA: most, afterS: 0, phaseRad: 0 };
   const found = greatest(terms, MOST_PERIODS / circuit.frequencyHz);
   const z = sumAt(terms, found.afterS);
   return { ...found, phaseRad: -Math.atan2(z.im, z.re) };
+}
+
+function loopOf(circuit: ClosingCircuit): LoopImpedance | NetworkLoop {
+  const { network, connected, closing } = circuit;
+  return network === undefined
+    ? new LoopImpedance(circuit)
+    : new NetworkLoop(network, mergedBranches(connected), closing);
 }
 
 /** The peak before its phase is known. */

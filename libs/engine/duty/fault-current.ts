@@ -1,5 +1,5 @@
 import type { Loads } from '../network/loads.js';
-import { strongestInto } from '../network/network-check.js';
+import { strongestOhm } from '../network/network-check.js';
 import type { NetworkModel } from '../network/network-model.js';
 import type { Supply } from '../supply/supply.js';
 import { pathImpedanceInto, type SupplyPath, supplyPath } from '../supply/supply-path.js';
@@ -80,11 +80,11 @@ export function faultCurrent(
 }
 
 function strongest(supply: Supply, nominalV: number, cMax: number, model: NetworkModel): [number, number] {
-  const z = new Float64Array(2);
   if (model.nodal !== null) {
-    strongestInto(model, z);
-    return [z[0]!, z[1]!];
+    const { rOhm, xOhm } = strongestOhm(model);
+    return [rOhm, xOhm];
   }
+  const z = new Float64Array(2);
   const path = supplyPath(supply, nominalV, supply.faultLevelMva.max, 'least');
   const c = path.transformers.length > 0 ? NETWORK_C_MAX : cMax;
   const source = { rOhm: c * path.source.rOhm, xOhm: c * path.source.xOhm };

@@ -1,8 +1,10 @@
-import type { Bank } from '../layout/bank.js';
+import type { Bank, StageGroup } from '../layout/bank.js';
 import { ratedA, stageOhm } from '../layout/stage.js';
-import type { SeriesOhm } from '../supply/supply-path.js';
+import { bankStates, stageKinds } from '../network/stage-kinds.js';
 import { closingPeak } from './closing-circuit.js';
+import type { ClosingStanding } from './closing-standings.js';
 import type { ClosingCircuit, SeriesBranch } from './loop-impedance.js';
+import type { ClosingNetwork } from './network-loop.js';
 import { CAPACITOR_RULES, type RuleSet } from './rules.js';
 
 /** Peak current of closing one stage of a group, closed forms. */
@@ -99,8 +101,8 @@ function inrushLimitA(switchPeakA: number | null, ownA: number, rules: RuleSet):
 export interface ClosingSite {
   nominalV: number;
   frequencyHz: number;
-  /** R and X of the supply at its greatest fault level, per phase [Ω] */
-  supplyOhm: SeriesOhm;
+  /** supply at its greatest fault level and what else stands in the network */
+  standings: readonly ClosingStanding[];
   /** every count vector the bank can stand at */
   vectors: readonly Int32Array[];
 }
@@ -118,39 +120,53 @@ export interface Closing {
   circuit: ClosingCircuit;
   /** connected stages per group before the closing */
   vector: Int32Array;
+  /** how the network stands; "" in the normal standing */
+  standing: string;
 }
 
 /**
- * Every closing of one stage of a group: alone first, then onto every level at which one is left. The inductance between
- * stages counts once, before the closing stage, as in the closed form; damping loads and harmonics are left out.
+ * Every closing of one stage of a group in every standing of the network: alone first, then onto every electrical state in
+ * which one is left; stages of one kind are one branch of their sum. The inductance between stages counts once, before the
+ * closing stage, as in the closed form, and also where it meets no stage but other capacitors at its bus; damping loads
+ * and harmonics are left out.
  * @param bank the bank
  * @param index the closing stage's group
- * @param site voltage, frequency, supply, count vectors
+ * @param site voltage, frequency, standings, count vectors
  * @returns circuits per phase
  * @source method-inrush
  */
 export function closings(bank: Bank, index: number, site: ClosingSite): Closing[] {
   const omega = 2 * Math.PI * site.frequencyHz;
-  const branches = bank.groups.map((group) => {
-    const ohm = stageOhm(group);
-    const farad = 1 / (omega * ohm.capacitiveOhm);
-    return { rOhm: ohm.resistanceOhm, inductanceH: ohm.inductiveOhm / omega, capacitanceF: farad };
-  });
-  const own = branches[index]!;
+  const kinds = stageKinds(bank);
+  const branches = kinds.first.map((group) => stageBranchAt(group, omega));
+  const own = stageBranchAt(bank.groups[index]!, omega);
   const ontoOwn = { ...own, inductanceH: own.inductanceH + bank.interStageUh * 1e-6 };
-  const supply = {
-    sourceOhm: site.supplyOhm.rOhm,
-    sourceH: site.supplyOhm.xOhm / omega,
-    crestV: (Math.SQRT2 * site.nominalV) / Math.sqrt(3),
-    frequencyHz: site.frequencyHz,
-  };
-  const onto = site.vectors.flatMap((vector): Closing[] => {
-    if (vector[index]! >= bank.groups[index]!.count) return [];
-    const connected = branches.flatMap((branch, g) => (vector[g]! > 0 ? [scaledBranch(branch, vector[g]!)] : []));
-    return connected.length === 0 ? [] : [{ circuit: { ...supply, connected, closing: ontoOwn }, vector }];
-  });
-  const alone = { circuit: { ...supply, connected: [], closing: own }, vector: new Int32Array(bank.groups.length) };
-  return [alone, ...onto];
+  const closable = site.vectors.filter((vector) => vector[index]! < bank.groups[index]!.count);
+  const states = bankStates(kinds, closable).filter(({ shares }) => shares.some((share) => share > 0));
+  const none = { vector: new Int32Array(bank.groups.length), shares: new Float64Array(kinds.first.length) };
+  return site.standings.flatMap(({ name, supplyOhm, beside, network }) =>
+    [none, ...states].map(({ vector, shares }): Closing => {
+      const stages = branches.flatMap((branch, kind) =>
+        shares[kind]! > 0 ? [scaledBranch(branch, shares[kind]!)] : [],
+      );
+      const connected = [...stages, ...beside];
+      const meets = connected.length > 0 || capacitorsAtBank(network);
+      const circuit = {
+        sourceOhm: supplyOhm.rOhm,
+        sourceH: supplyOhm.xOhm / omega,
+        crestV: (Math.SQRT2 * site.nominalV) / Math.sqrt(3),
+        frequencyHz: site.frequencyHz,
+        connected,
+        closing: meets ? ontoOwn : own,
+        ...(network === null ? {} : { network }),
+      };
+      return { circuit, vector, standing: name };
+    }),
+  );
+}
+
+function capacitorsAtBank(network: ClosingNetwork | null): boolean {
+  return network?.branches.some(({ from, capacitanceF }) => from === network.bankNode && capacitanceF > 0) ?? false;
 }
 
 /**
@@ -162,10 +178,23 @@ export function closings(bank: Bank, index: number, site: ClosingSite): Closing[
  * @source method-inrush
  */
 export function exactInrush(bank: Bank, index: number, site: ClosingSite): ExactInrush | null {
-  const peaksA = closings(bank, index, site).map(({ circuit }) => closingPeak(circuit).peakA);
-  const worstPeakA = peaksA.reduce((worst, peakA) => Math.max(worst, peakA));
+  const all = closings(bank, index, site);
+  const isAlone = ({ vector }: Closing): boolean => vector.every((count) => count === 0);
+  const peakOver = (worst: number, { circuit }: Closing): number => Math.max(worst, closingPeak(circuit, worst).peakA);
+  const singlePeakA = all.filter(isAlone).reduce(peakOver, 0);
+  // The higher the level the greater the peak, as a rule: from the top, most of the rest need not be followed.
+  const worstPeakA = all.filter((closing) => !isAlone(closing)).reduceRight(peakOver, singlePeakA);
   // A circuit far from any that is built (a reactor of nothing but resistance) has modes that are not found.
-  return Number.isFinite(worstPeakA) ? { singlePeakA: peaksA[0]!, worstPeakA } : null;
+  return Number.isFinite(worstPeakA) ? { singlePeakA, worstPeakA } : null;
+}
+
+function stageBranchAt(group: StageGroup, omega: number): SeriesBranch {
+  const ohm = stageOhm(group);
+  return {
+    rOhm: ohm.resistanceOhm,
+    inductanceH: ohm.inductiveOhm / omega,
+    capacitanceF: 1 / (omega * ohm.capacitiveOhm),
+  };
 }
 
 // Equal branches in parallel are one branch of their sum.

@@ -7,14 +7,13 @@ import {
   type NearPeak,
   type NetworkSummary,
   nearestPeak,
-  strongestInto,
   summarizeNetwork,
 } from '../network/network-check.js';
 import type { NetworkModel } from '../network/network-model.js';
 import { PeakFinder } from '../network/peaks.js';
 import type { Supply } from '../supply/supply.js';
-import { pathImpedanceInto } from '../supply/supply-path.js';
 import { type ChargeStage, chargeStages } from './charge.js';
+import { closingStandings } from './closing-standings.js';
 import { type Duty, DutyRow, NEAR_RATIO } from './duty-row.js';
 import { type ExactInrush, exactInrush, type InrushStage, inrushStages } from './inrush.js';
 import type { LimitChoice } from './limit-editions.js';
@@ -97,7 +96,7 @@ export function judgeBank(model: NetworkModel, bank: Bank, levels: Level[], basi
     ]),
     ...bankDuties.duties(),
   ];
-  const nearPeak = nearestPeak(model, tables, finder, PEAK_REACH_H);
+  const nearPeak = nearestPeak(model, tables, new PeakFinder(model, bank, PEAK_REACH_H), PEAK_REACH_H);
   const distortingSharePct = plainSharePct(bank, basis);
   const watched = nearPeak !== null || distortingSharePct !== null || (networkUnknown && bank.groups.length > 0);
   const worst = duties.reduce<Verdict>((verdict, duty) => graver(verdict, duty.verdict), 'clear');
@@ -137,11 +136,12 @@ export function inrushDuty(bank: Bank, inrush: InrushStage, rules: RuleSet): Dut
 }
 
 function exactInrushes(model: NetworkModel, bank: Bank, levels: Level[], basis: JudgeBasis): (ExactInrush | null)[] {
+  const standings = closingStandings(model, basis.frequencyHz);
   return bank.groups.map((_, g) =>
     exactInrush(bank, g, {
       nominalV: basis.voltages.nominalV,
       frequencyHz: basis.frequencyHz,
-      supplyOhm: fundamentalOhm(model),
+      standings,
       vectors: levels.flatMap(({ vectors }) => vectors),
     }),
   );
@@ -201,19 +201,6 @@ function inrushRow(
   // Over the limit only because of a customary inductance between stages: reactors or an inrush-limiting switch are due.
   const assumed = !bank.interStageGiven && singleA <= limitA;
   return [duty.verdict === 'avoid' && assumed ? { ...duty, verdict: 'watch' } : duty];
-}
-
-/**
- * Supply at its strongest, seen from the bank's bus at the fundamental, loads and capacitors left out.
- * @param model the network without the bank
- * @returns R and X per phase [Ω]
- * @source method-inrush
- */
-export function fundamentalOhm(model: NetworkModel): { rOhm: number; xOhm: number } {
-  const z = new Float64Array(2);
-  if (model.nodal === null) pathImpedanceInto(model.corners.networks[1]!.path, 1, z);
-  else strongestInto(model, z);
-  return { rOhm: z[0]!, xOhm: z[1]! };
 }
 
 /**

@@ -1,4 +1,6 @@
-import { type ComplexNumber, cAbs, cAdd, cDivide, cMultiply, cScale, cSubtract } from '../quantity/complex-number.js';
+import { type ComplexNumber, cAdd, cDivide, cMultiply, cScale, cSubtract } from '../quantity/complex-number.js';
+import { improvedRoots } from './aberth.js';
+import type { ClosingNetwork } from './network-loop.js';
 
 /** A series branch at the fundamental's resistance: R + sL + 1/(sC); inductance 0 for a plain stage. */
 export interface SeriesBranch {
@@ -17,14 +19,14 @@ export interface ClosingCircuit {
   /** what is connected already, in its steady state */
   connected: SeriesBranch[];
   closing: SeriesBranch;
+  /** takes the source's place where other capacitors stand behind an impedance */
+  network?: ClosingNetwork;
   /** crest of the source's phase voltage [V] */
   crestV: number;
   frequencyHz: number;
 }
 
 const ONE: ComplexNumber = { re: 1, im: 0 };
-const MOST_ITERATIONS = 200;
-const ROOT_SHARE = 1e-13;
 
 /** Z(s) = Z_closing(s) + 1/Y_rest(s) with its slope and its zeros. */
 export class LoopImpedance {
@@ -81,13 +83,7 @@ export class LoopImpedance {
   zeros(): ComplexNumber[] {
     const poles = this.#poles();
     const count = poles.length + this.#growth();
-    const roots = this.#guesses(count);
-    for (let round = 0; round < MOST_ITERATIONS; round++) {
-      let moved = 0;
-      for (let k = 0; k < count; k++) moved = Math.max(moved, this.#improve(roots, k, poles));
-      if (moved < ROOT_SHARE) break;
-    }
-    return roots;
+    return improvedRoots(this.#guesses(count), (s) => this.#logSlope(s, poles));
   }
 
   #growth(): number {
@@ -104,22 +100,12 @@ export class LoopImpedance {
     return poles;
   }
 
-  #improve(roots: ComplexNumber[], k: number, poles: readonly ComplexNumber[]): number {
-    const s = roots[k]!;
+  #logSlope(s: ComplexNumber, poles: readonly ComplexNumber[]): ComplexNumber {
     const closing = branchZ(this.#circuit.closing, s);
     const rest = this.#rest(s);
     const f = cAdd(ONE, cMultiply(closing.value, rest.value));
     const fSlope = cAdd(cMultiply(closing.slope, rest.value), cMultiply(closing.value, rest.slope));
-    // Newton's step is −1/(N'/N); the other roots push it away (Aberth's correction).
-    let logSlope = cDivide(fSlope, f);
-    for (const pole of poles) logSlope = cAdd(logSlope, cDivide(ONE, cSubtract(s, pole)));
-    for (let other = 0; other < roots.length; other++) {
-      if (other !== k) logSlope = cSubtract(logSlope, cDivide(ONE, cSubtract(s, roots[other]!)));
-    }
-    const step = cDivide(ONE, logSlope);
-    if (!Number.isFinite(step.re) || !Number.isFinite(step.im)) return 0;
-    roots[k] = cSubtract(s, step);
-    return cAbs(step) / cAbs(roots[k]!);
+    return poles.reduce((sum, pole) => cAdd(sum, cDivide(ONE, cSubtract(s, pole))), cDivide(fSlope, f));
   }
 
   // Spread over the natural frequencies of the parts, off the axes so that no two start alike.
@@ -165,8 +151,12 @@ function branchZeros({ rOhm, inductanceH, capacitanceF }: SeriesBranch): Complex
       ];
 }
 
-// Branches of one tuning and quality are one branch of their sum: left apart they would hide a double zero.
-function mergedBranches(branches: readonly SeriesBranch[]): SeriesBranch[] {
+/**
+ * Branches of one tuning and quality are one branch of their sum: left apart they would hide a double zero.
+ * @param branches in parallel
+ * @returns one branch a tuning and quality
+ */
+export function mergedBranches(branches: readonly SeriesBranch[]): SeriesBranch[] {
   const merged: SeriesBranch[] = [];
   for (const branch of branches) {
     const alike = merged.find(

@@ -28,6 +28,7 @@ function flow(level: number, pct: { voltage: number; current?: number }, corner 
     level,
     levelKvar: 50 * level,
     vector: Int32Array.of(level),
+    connected: Uint8Array.of(level),
     corner: model.corners.corners[corner]!,
     ordersH: Float64Array.of(11),
     voltageV,

@@ -4,6 +4,7 @@ import type { Flow } from '../network/bus-flow.js';
 import { bankModel, eachFlow } from '../network/flow.js';
 import type { NetworkModel } from '../network/network-model.js';
 import { branchRatio, stageBranch } from '../network/stage-admittance.js';
+import { resistanceGrowth } from '../quantity/resistance-growth.js';
 import type { DutyVoltages } from './stage-duties.js';
 
 /** What one stage of a group is asked for, the worst over levels and corners. */
@@ -47,7 +48,7 @@ export function bankDemand(
   eachFlow(model, bankModel(model, bank, levels), (flow) => {
     let lossW = 0;
     for (const [g, branch] of branches[flow.corner.factors]!.entries()) {
-      if (flow.vector[g] === 0) continue;
+      if (flow.connected[g] === 0) continue;
       const rise = 1 + flow.levelKvar / (site.shortCircuitMinMva * 1000);
       const ratio = branchRatio(branch);
       const fundamentalA = site.highestV / Math.sqrt(3) / (branch.capacitiveOhm * (1 - ratio));
@@ -80,7 +81,7 @@ function stageMet(
     square += a * a;
     sumA += a;
     voltageSquare += ((Math.sqrt(3) * a * branch.capacitiveOhm) / h) ** 2;
-    loss += branch.resistanceOhm * h ** branch.resistanceExponent * a * a;
+    loss += branch.resistanceOhm * resistanceGrowth(h, branch.resistanceExponent) * a * a;
   }
   return { rmsA: Math.sqrt(square), sumA, rmsV: Math.sqrt(voltageSquare), lossW: 3 * loss };
 }

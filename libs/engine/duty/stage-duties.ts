@@ -67,7 +67,7 @@ export class StageDuties {
 
   /** @param flow the next flow; ignored unless a stage of the group is connected in it */
   take(flow: Flow): void {
-    if (flow.vector[this.#index] === 0) return;
+    if (flow.connected[this.#index] === 0) return;
     const state = this.#states[flow.corner.factors]!;
     const place = { levelKvar: flow.levelKvar, corner: flow.corner.corner, orderH: null };
     const currents = flow.stageA[this.#index]!;

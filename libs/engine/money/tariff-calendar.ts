@@ -1,3 +1,4 @@
+import { monthSpan } from '../record/month-span.js';
 import { civilDate, dayNumber, offsetAtS, type ZoneTable } from '../record/zone-table.js';
 
 /** The times of a record: the part of it that a tariff's calendar looks at. */
@@ -79,22 +80,10 @@ function beginMonth(months: TariffMonth[], day: number, from: number, of: { span
   const monthsSinceYearZero = year * 12 + month - 1;
   const last = months[months.length - 1];
   if (last !== undefined && monthsSinceYearZero <= last.monthsSinceYearZero) return;
-  const beginS = utcOfLocalS(of.zone, dayNumber(year, month, 1) * DAY_S);
-  const next = month === 12 ? dayNumber(year + 1, 1, 1) : dayNumber(year, month + 1, 1);
-  const endS = utcOfLocalS(of.zone, next * DAY_S);
+  const { beginS, endS } = monthSpan(of.zone, year, month);
   const coveredS = Math.min(of.span.endS, endS) - Math.max(of.span.firstS, beginS);
   const name = `${String(year).padStart(4, '0')}-${String(month).padStart(2, '0')}`;
   months.push({ name, month, monthsSinceYearZero, coverage: coveredS / (endS - beginS), from, end: from });
-}
-
-// First moment at which the local clock shows `localS` or later.
-function utcOfLocalS(zone: ZoneTable, localS: number): number {
-  for (let k = 0; k < zone.fromS.length; k++) {
-    const fromS = k === 0 ? Number.NEGATIVE_INFINITY : zone.fromS[k]!;
-    const atS = Math.max(fromS, localS - zone.offsetS[k]!);
-    if (k === zone.fromS.length - 1 || atS < zone.fromS[k + 1]!) return atS;
-  }
-  return localS;
 }
 
 function dayOf(date: string): number {

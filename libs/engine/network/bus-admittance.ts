@@ -1,3 +1,4 @@
+import { resistanceGrowth } from '../quantity/resistance-growth.js';
 import { pathImpedanceInto } from '../supply/supply-path.js';
 import type { NetworkCase } from './corners.js';
 
@@ -57,7 +58,7 @@ export function networkTable(network: NetworkCase, model: DampingModel, ordersH:
     let g = z[0]! / square + restSiemens;
     let b = -z[1]! / square;
     if (motorOhm > 0) {
-      const r = MOTOR_RESISTANCE_SHARE * motorOhm * h ** network.path.resistanceExponent;
+      const r = MOTOR_RESISTANCE_SHARE * motorOhm * resistanceGrowth(h, network.path.resistanceExponent);
       const x = motorOhm * h;
       const motorSquare = r * r + x * x;
       g += r / motorSquare;

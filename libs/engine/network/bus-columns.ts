@@ -1,6 +1,5 @@
 import { type ComplexColumn, LEAST_SIEMENS } from './bus-admittance.js';
 import { type NetworkModel, tableAt } from './network-model.js';
-import { type NodalTable, nodalTable } from './nodal-impedance.js';
 
 /**
  * What a bus and the bank's bus know of each other with the bank out, over orders. Connecting the bank is a rank-1
@@ -23,12 +22,13 @@ export interface BusColumns {
  * @source method-network
  */
 export function busColumns(model: NetworkModel, network: number, bus: number, ordersH: Float64Array): BusColumns {
-  const nodal = model.nodal?.cases[network];
-  if (nodal === undefined) return { bank: tableAt(model, network, ordersH).bus, other: null };
-  const table = nodalTable(nodal, ordersH);
-  const bankNode = nodal.busNode[model.bankBus]!;
-  const bank = reciprocal(tableColumn(table, bankNode, bankNode));
-  return { bank, other: otherColumns(table, nodal.busNode[bus]!, bankNode) };
+  const nodal = model.nodal;
+  if (nodal === null) return { bank: tableAt(model, network, ordersH).bus, other: null };
+  const { busNode } = nodal.cases[network]!;
+  const eliminated = nodal.eliminated[network]!;
+  if (busNode[bus] === busNode[model.bankBus]) return { bank: eliminated.bankAdmittance(ordersH), other: null };
+  const { bank, nodes } = eliminated.columns(ordersH);
+  return { bank, other: nodes[busNode[bus]!]! };
 }
 
 /**
@@ -40,51 +40,22 @@ export function busColumns(model: NetworkModel, network: number, bus: number, or
  * @source method-network
  */
 export function networkColumns(model: NetworkModel, network: number, ordersH: Float64Array): BusColumns[] {
-  const nodal = model.nodal?.cases[network];
-  if (nodal === undefined) return [busColumns(model, network, 0, ordersH)];
-  const table = nodalTable(nodal, ordersH);
-  const bankNode = nodal.busNode[model.bankBus]!;
-  const bank = reciprocal(tableColumn(table, bankNode, bankNode));
-  const perNode = [...new Set(nodal.busNode)]
-    .sort((a, b) => a - b)
-    .map((node) => ({ bank, other: otherColumns(table, node, bankNode) }));
-  return Array.from(nodal.busNode, (node) => perNode[node]!);
-}
-
-function otherColumns(table: NodalTable, node: number, bankNode: number): BusColumns['other'] {
-  if (node === bankNode) return null;
-  return { self: tableColumn(table, node, node), toBank: tableColumn(table, node, bankNode) };
-}
-
-function tableColumn(table: NodalTable, row: number, column: number): ComplexColumn {
-  const n = table.nodes;
-  const length = table.ordersH.length;
-  const out: ComplexColumn = { re: new Float64Array(length), im: new Float64Array(length) };
-  for (let i = 0, at = 2 * (row * n + column); i < length; i++, at += 2 * n * n) {
-    out.re[i] = table.z[at]!;
-    out.im[i] = table.z[at + 1]!;
-  }
-  return out;
-}
-
-function reciprocal({ re, im }: ComplexColumn): ComplexColumn {
-  const out: ComplexColumn = { re: new Float64Array(re.length), im: new Float64Array(re.length) };
-  for (let i = 0; i < re.length; i++) {
-    const square = re[i]! * re[i]! + im[i]! * im[i]!;
-    out.re[i] = re[i]! / square;
-    out.im[i] = -im[i]! / square;
-  }
-  return out;
+  const nodal = model.nodal;
+  if (nodal === null) return [busColumns(model, network, 0, ordersH)];
+  const { busNode } = nodal.cases[network]!;
+  const bankNode = busNode[model.bankBus]!;
+  const { bank, nodes } = nodal.eliminated[network]!.columns(ordersH);
+  return Array.from(busNode, (node) => ({ bank, other: node === bankNode ? null : nodes[node]! }));
 }
 
 /**
  * Admittance of the bank at a count vector: Y = Σ n_g·y_g.
  * @param stages y of one stage of each group [S], length n
- * @param vector connected stages per group
+ * @param vector connected stages per group, or shares of each kind
  * @param length n
  * @returns Y [S]
  */
-export function bankColumn(stages: readonly ComplexColumn[], vector: Int32Array, length: number): ComplexColumn {
+export function bankColumn(stages: readonly ComplexColumn[], vector: ArrayLike<number>, length: number): ComplexColumn {
   const out: ComplexColumn = { re: new Float64Array(length), im: new Float64Array(length) };
   for (const [g, { re, im }] of stages.entries()) {
     const count = vector[g]!;

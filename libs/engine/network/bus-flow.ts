@@ -13,8 +13,10 @@ export interface Flow {
   /** index into the levels; 0 is the bank out */
   level: number;
   levelKvar: number;
-  /** connected stages per group */
+  /** connected stages per group; the first of the count vectors with these flows */
   vector: Int32Array;
+  /** per group, 1 where one of those count vectors has a stage of it in */
+  connected: Uint8Array;
   corner: CornerCase;
   ordersH: Float64Array;
   /** V_h at the bank's bus, phase value [V] */

@@ -5,12 +5,15 @@ import type { Flow } from './bus-flow.js';
 import type { NetworkModel } from './network-model.js';
 import { nodalFlowInto } from './nodal-flow.js';
 import { stageAdmittance, stageBranch } from './stage-admittance.js';
+import { type BankState, bankStates, stageKinds } from './stage-kinds.js';
 import { combine } from './summation.js';
 
 /** A bank's admittances at the orders present. */
 export interface BankModel {
   bank: Bank;
   levels: Level[];
+  /** electrical states of each level */
+  states: BankState[][];
   /** [factors][group] */
   stages: ComplexColumn[][];
 }
@@ -25,9 +28,11 @@ export interface BankModel {
  */
 export function bankModel(model: NetworkModel, bank: Bank, levels: Level[]): BankModel {
   const exponent = model.corners.networks[0]!.path.resistanceExponent;
+  const kinds = stageKinds(bank);
   return {
     bank,
     levels,
+    states: levels.map(({ vectors }) => bankStates(kinds, vectors)),
     stages: model.corners.factors.map((factors) =>
       bank.groups.map((group) => stageAdmittance(stageBranch(group, factors, exponent), model.excitation.ordersH)),
     ),
@@ -35,7 +40,7 @@ export function bankModel(model: NetworkModel, bank: Bank, levels: Level[]): Ban
 }
 
 /**
- * Visits the flow of every level, corner and count vector, in that order of nesting.
+ * Visits the flow of every level, corner and electrical state, in that order of nesting.
  * Z = 1/(Y₀ + Y_bank); from the loads V = |Z|·I, source current |Z/Z_s|·I; from the background E behind the source
  * V = |E·Z/Z_s|, source current |E·(1 − Z/Z_s)/Z_s|; each pair combined with the order's exponent. |Z| stands before
  * both voltages, so they are combined once, as currents I and E/|Z_s|.
@@ -51,6 +56,7 @@ export function eachFlow(model: NetworkModel, bank: BankModel, visit: (flow: Flo
     level: 0,
     levelKvar: 0,
     vector: new Int32Array(bank.bank.groups.length),
+    connected: new Uint8Array(bank.bank.groups.length),
     corner: model.corners.corners[0]!,
     ordersH: model.excitation.ordersH,
     voltageV,
@@ -66,10 +72,11 @@ export function eachFlow(model: NetworkModel, bank: BankModel, visit: (flow: Flo
   };
   for (const [k, level] of bank.levels.entries()) {
     for (const corner of model.corners.corners) {
-      for (const vector of level.vectors) {
+      for (const { vector, connected } of bank.states[k]!) {
         flow.level = k;
         flow.levelKvar = level.levelKvar;
         flow.vector = vector;
+        flow.connected = connected;
         flow.corner = corner;
         if (model.nodal === null) flowInto(model, bank.stages[corner.factors]!, flow);
         else nodalFlowInto(model, bank.stages[corner.factors]!, flow);

@@ -1,4 +1,4 @@
-import { type SupplyPath, shortCircuitMva } from '../supply/supply-path.js';
+import { pathImpedanceInto, type SeriesOhm, type SupplyPath, shortCircuitMva } from '../supply/supply-path.js';
 import type { Flow } from './bus-flow.js';
 import type { Corner } from './corners.js';
 import type { BankModel } from './flow.js';
@@ -7,6 +7,7 @@ import { networkStates } from './network-states.js';
 import { nodalCase } from './nodal-case.js';
 import { nodalTable } from './nodal-impedance.js';
 import type { PeakFinder } from './peaks.js';
+import type { NetworkState } from './topology.js';
 
 /** Voltage and currents at one order. */
 export interface OrderResult {
@@ -143,7 +144,7 @@ export function nearestPeak(model: NetworkModel, bank: BankModel, finder: PeakFi
   if (model.excitation.ordersH.length === 0) return null;
   let nearest: NearPeak | null = null;
   let leastH = Number.POSITIVE_INFINITY;
-  for (const peak of everyPeak(model, bank, finder, reachH)) {
+  for (const peak of everyPeak(model, bank, finder, () => Math.min(reachH, leastH))) {
     const awayH = Math.abs(peak.peakOrderH - peak.presentOrderH);
     if (awayH > reachH || awayH >= leastH) continue;
     leastH = awayH;
@@ -163,22 +164,27 @@ export function nearestPeak(model: NetworkModel, bank: BankModel, finder: PeakFi
  */
 export function hasNearPeak(model: NetworkModel, bank: BankModel, finder: PeakFinder, reachH: number): boolean {
   if (model.excitation.ordersH.length === 0) return false;
-  for (const { peakOrderH, presentOrderH } of everyPeak(model, bank, finder, reachH)) {
+  for (const { peakOrderH, presentOrderH } of everyPeak(model, bank, finder, () => reachH)) {
     if (Math.abs(peakOrderH - presentOrderH) <= reachH) return true;
   }
   return false;
 }
 
-// Levels above 0, corners, count vectors, buses, in that order of nesting; each peak with the order present it is
-// nearest to.
-function* everyPeak(model: NetworkModel, bank: BankModel, finder: PeakFinder, reachH: number): Generator<NearPeak> {
+// Levels above 0, corners, electrical states, buses, in that order of nesting; each peak with the order present it is
+// nearest to. Brackets wholly out of reach are not refined.
+function* everyPeak(
+  model: NetworkModel,
+  bank: BankModel,
+  finder: PeakFinder,
+  reachH: () => number,
+): Generator<NearPeak> {
   const within = (lowH: number, highH: number): boolean =>
-    model.excitation.ordersH.some((h) => h >= lowH - reachH && h <= highH + reachH);
-  for (const { levelKvar, vectors } of bank.levels.slice(1)) {
+    model.excitation.ordersH.some((h) => h >= lowH - reachH() && h <= highH + reachH());
+  for (const [k, { levelKvar }] of bank.levels.slice(1).entries()) {
     for (const corner of model.corners.corners) {
-      for (const vector of vectors) {
-        for (const [k, bus] of model.buses.entries()) {
-          for (const { orderH } of finder.peaks(vector, corner, k, within)) {
+      for (const { vector } of bank.states[k + 1]!) {
+        for (const [at, bus] of model.buses.entries()) {
+          for (const { orderH } of finder.peaks(vector, corner, at, within)) {
             const presentOrderH = nearestOrder(model.excitation.ordersH, orderH);
             yield { bus, levelKvar, corner: corner.corner, peakOrderH: orderH, presentOrderH };
           }
@@ -222,23 +228,35 @@ function nodalShortCircuit(
 }
 
 /**
- * Impedance of the supply at its strongest, seen from the bank's bus at the fundamental.
- * @param model the network without the bank, with several buses
- * @param out receives [Re, Im] of the standing with the least |Z| [Ω]
+ * Impedance of the supply at its strongest, seen from the bank's bus at the fundamental, loads and capacitors left out.
+ * @param model the network without the bank
+ * @param states standings to choose from; all of them where absent
+ * @returns R and X per phase of the one with the least |Z| [Ω]
  * @source method-network
  */
-export function strongestInto(model: NetworkModel, out: Float64Array): void {
-  const found = bareImpedances(model, model.corners.networks[1]!.path);
+export function strongestOhm(model: NetworkModel, states?: readonly NetworkState[]): SeriesOhm {
+  const { path } = model.corners.networks[1]!;
+  if (model.nodal === null) {
+    const z = new Float64Array(2);
+    pathImpedanceInto(path, 1, z);
+    return { rOhm: z[0]!, xOhm: z[1]! };
+  }
+  const found = bareImpedances(model, path, states);
   const size = ([re, im]: [number, number]): number => re * re + im * im;
-  out.set(found.reduce((least, z) => (size(z) < size(least) ? z : least)));
+  const [rOhm, xOhm] = found.reduce((least, z) => (size(z) < size(least) ? z : least));
+  return { rOhm, xOhm };
 }
 
 // Source, transformers, cables and running generators alone, in every standing.
-function bareImpedances(model: NetworkModel, path: SupplyPath): [number, number][] {
+function bareImpedances(
+  model: NetworkModel,
+  path: SupplyPath,
+  states: readonly NetworkState[] = networkStates(model.nodal!.topology),
+): [number, number][] {
   const { topology } = model.nodal!;
   const none = topology.motorKw.map(() => 0);
   const bare = { ...topology, motorKw: none, resistiveKw: none };
-  return networkStates(topology).map((state) => {
+  return states.map((state) => {
     const withoutCapacitors = { ...state, capacitorsIn: state.capacitorsIn.map(() => 0) };
     const nodal = nodalCase(bare, withoutCapacitors, path, { ...model.damping, dampingKw: 0, listedShare: 0 });
     const { z, nodes } = nodalTable(nodal, Float64Array.of(1));

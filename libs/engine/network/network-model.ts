@@ -1,6 +1,8 @@
+import { resistanceGrowth } from '../quantity/resistance-growth.js';
 import type { Supply } from '../supply/supply.js';
 import { type DampingModel, type NetworkTable, networkTable } from './bus-admittance.js';
 import { type CornerSet, cornerSet } from './corners.js';
+import { EliminatedNetwork } from './eliminated-network.js';
 import type { Loads } from './loads.js';
 import { networkStates } from './network-states.js';
 import { type NodalCase, nodalCase } from './nodal-case.js';
@@ -23,6 +25,8 @@ export interface NodalModel {
   topology: Topology;
   /** per network */
   cases: NodalCase[];
+  /** per network, seen from the bank's bus */
+  eliminated: EliminatedNetwork[];
   /** per network, at the orders present */
   tables: NodalTable[];
   /** per bus: combined current of the loads at it, at the orders present [A] */
@@ -108,21 +112,15 @@ export function siteNetwork(
  */
 export function tableAt(model: NetworkModel, network: number, ordersH: Float64Array): NetworkTable {
   if (model.nodal === null) return networkTable(model.corners.networks[network]!, model.damping, ordersH);
-  const nodalCase = model.nodal.cases[network]!;
-  return bankBusTable(nodalTable(nodalCase, ordersH), nodalCase.busNode[model.bankBus]!);
-}
-
-function bankBusTable(table: NodalTable, node: number): NetworkTable {
-  const n = table.nodes;
-  const re = new Float64Array(table.ordersH.length);
-  const im = new Float64Array(table.ordersH.length);
-  for (let i = 0; i < re.length; i++) {
-    const at = 2 * (i * n * n + node * n + node);
-    const square = table.z[at]! ** 2 + table.z[at + 1]! ** 2;
-    re[i] = table.z[at]! / square;
-    im[i] = -table.z[at + 1]! / square;
-  }
-  return { ordersH: table.ordersH, source: { re: table.sourceRe, im: table.sourceIm }, bus: { re, im } };
+  const { source, resistanceExponent } = model.nodal.cases[network]!;
+  return {
+    ordersH,
+    source: {
+      re: ordersH.map((h) => source.rOhm * resistanceGrowth(h, resistanceExponent)),
+      im: ordersH.map((h) => source.xOhm * h),
+    },
+    bus: model.nodal.eliminated[network]!.bankAdmittance(ordersH),
+  };
 }
 
 function nodalModel(parts: {
@@ -142,6 +140,7 @@ function nodalModel(parts: {
   return {
     topology,
     cases,
+    eliminated: cases.map((nodal) => new EliminatedNetwork(nodal, nodal.busNode[topology.bankBus]!)),
     tables: cases.map((nodal) => nodalTable(nodal, present.ordersH)),
     injectedA: topology.buses.map((name, bus) => busInjection(loads, present, { name, first: bus === 0 })),
   };

@@ -1,3 +1,4 @@
+import { resistanceGrowth } from '../quantity/resistance-growth.js';
 import type { NodalCase } from './nodal-case.js';
 
 /** Impedance matrices of one network over orders, bank left out: [order][row][column][re, im]. */
@@ -33,7 +34,7 @@ export function nodalTable(network: NodalCase, ordersH: Float64Array): NodalTabl
   const exchanged = new Int32Array(n);
   for (let i = 0; i < ordersH.length; i++) {
     const h = ordersH[i]!;
-    const growth = h ** network.resistanceExponent;
+    const growth = resistanceGrowth(h, network.resistanceExponent);
     table.sourceRe[i] = network.source.rOhm * growth;
     table.sourceIm[i] = network.source.xOhm * h;
     for (let k = 0; k < n; k++) table.z[i * size + 2 * (k * n + k)] = network.conductance[k]!;

@@ -6,6 +6,7 @@ import type { CornerCase } from './corners.js';
 import type { NetworkModel } from './network-model.js';
 import { HIGHEST_ORDER_H } from './spectra.js';
 import { branchRatio, type StageBranch, stageAdmittance, stageBranch } from './stage-admittance.js';
+import { kindShares, type StageKinds, stageKinds } from './stage-kinds.js';
 
 /** An interior local maximum of |Z(h)| at the bus. */
 export interface Peak {
@@ -44,7 +45,7 @@ const ONE_POINT_H = 1e-9;
  */
 export class PeakFinder {
   readonly #model: NetworkModel;
-  readonly #bank: Bank;
+  readonly #kinds: StageKinds;
   readonly #ordersH: Float64Array;
   /** reused from call to call */
   readonly #square: Float64Array;
@@ -58,7 +59,7 @@ export class PeakFinder {
    */
   constructor(model: NetworkModel, bank: Bank, near?: number) {
     this.#model = model;
-    this.#bank = bank;
+    this.#kinds = stageKinds(bank);
     const all = peakGrid([...this.#tunedOrders(), ...networkTunedOrders(model)]);
     // A step more on either side, so that a peak at the edge still has a sample beyond it.
     const reach = near === undefined ? Number.POSITIVE_INFINITY : near + 2 * GRID_STEP_H;
@@ -84,14 +85,15 @@ export class PeakFinder {
   ): Peak[] {
     const columns = this.#columns(corner.network, bus);
     const square = this.#square;
-    seenSquareInto(columns, bankColumn(this.#stagesAt(corner.factors), vector, square.length), square);
+    const shares = kindShares(this.#kinds, vector);
+    seenSquareInto(columns, bankColumn(this.#stagesAt(corner.factors), shares, square.length), square);
     const peaks: Peak[] = [];
     for (let i = 1; i < square.length - 1; i++) {
       if (!(square[i]! < square[i - 1]! && square[i]! <= square[i + 1]!)) continue;
       const lowH = this.#ordersH[i - 1]!;
       const highH = this.#ordersH[i + 1]!;
       if (!worthRefining(lowH, highH)) continue;
-      const exact = (h: number): number => this.#squareAt(h, vector, { corner, bus });
+      const exact = (h: number): number => this.#squareAt(h, shares, { corner, bus });
       const orderH = goldenMinimum(exact, lowH, highH, REFINED_WIDTH_H);
       if (orderH > 1 + GRID_STEP_H / 100 && orderH < HIGHEST_ORDER_H - GRID_STEP_H / 100) {
         peaks.push({ orderH, impedanceOhm: 1 / Math.sqrt(exact(orderH)) });
@@ -99,7 +101,7 @@ export class PeakFinder {
     }
     return this.#model.nodal === null
       ? peaks
-      : this.#withShoulders(peaks, square, (h) => this.#squareAt(h, vector, { corner, bus }));
+      : this.#withShoulders(peaks, square, (h) => this.#squareAt(h, shares, { corner, bus }));
   }
 
   /**
@@ -135,7 +137,7 @@ export class PeakFinder {
   #branches(factors: number): StageBranch[] {
     const exponent = this.#model.corners.networks[0]!.path.resistanceExponent;
     const factor = this.#model.corners.factors[factors]!;
-    return this.#bank.groups.map((group) => stageBranch(group, factor, exponent));
+    return this.#kinds.first.map((group) => stageBranch(group, factor, exponent));
   }
 
   #tunedOrders(): number[] {
@@ -156,11 +158,11 @@ export class PeakFinder {
     return this.#buses[network][bus]!;
   }
 
-  #squareAt(orderH: number, vector: Int32Array, at: { corner: CornerCase; bus: number }): number {
+  #squareAt(orderH: number, shares: Float64Array, at: { corner: CornerCase; bus: number }): number {
     const ordersH = Float64Array.of(orderH);
     const stages = this.#branches(at.corner.factors).map((branch) => stageAdmittance(branch, ordersH));
     const out = new Float64Array(1);
-    seenSquareInto(busColumns(this.#model, at.corner.network, at.bus, ordersH), bankColumn(stages, vector, 1), out);
+    seenSquareInto(busColumns(this.#model, at.corner.network, at.bus, ordersH), bankColumn(stages, shares, 1), out);
     return out[0]!;
   }
 }

@@ -16,32 +16,78 @@ export function scanEqualStagesInto(
   counts: Float64Array,
   out: Float64Array,
 ): void {
-  const m = bus.re.length;
-  const a = new Float64Array(m);
-  const b = new Float64Array(m);
-  const c = new Float64Array(m);
-  quadraticInto(bus, stage, { a, b, c });
-  for (let level = 0; level < counts.length; level++) levelInto({ a, b, c }, counts[level]!, out, level * m);
+  const below = emptyQuadratic(bus.re.length);
+  quadraticInto(bus, stage, below);
+  levelsInto(below, counts, out);
 }
 
+/** |Y₀ + n·y|² = a + n·(b + n·c). */
 interface Quadratic {
   a: Float64Array;
   b: Float64Array;
   c: Float64Array;
+  /** Y₀ and y all but cancel somewhere, and rounding could take the square below nothing */
+  delicate: boolean;
 }
+
+/** 4ac − b² against 4ac, the square of the sine of the angle between Y₀ and y: below this it is mostly rounding. */
+const LEAST_SINE_SQUARE = 1e-12;
 
 function quadraticInto(bus: ComplexColumn, stage: ComplexColumn, q: Quadratic): void {
   const { re, im } = bus;
   const { re: g, im: s } = stage;
+  const { a, b, c } = q;
   for (let i = 0; i < re.length; i++) {
-    q.a[i] = re[i]! * re[i]! + im[i]! * im[i]!;
-    q.b[i] = 2 * (re[i]! * g[i]! + im[i]! * s[i]!);
-    q.c[i] = g[i]! * g[i]! + s[i]! * s[i]!;
+    const own = re[i]! * re[i]! + im[i]! * im[i]!;
+    const cross = 2 * (re[i]! * g[i]! + im[i]! * s[i]!);
+    const each = g[i]! * g[i]! + s[i]! * s[i]!;
+    a[i] = own;
+    b[i] = cross;
+    c[i] = each;
+    if (cross * cross > (1 - LEAST_SINE_SQUARE) * 4 * own * each) q.delicate = true;
   }
 }
 
-function levelInto({ a, b, c }: Quadratic, count: number, out: Float64Array, offset: number): void {
-  for (let i = 0; i < a.length; i++) out[offset + i] = 1 / Math.sqrt(a[i]! + count * (b[i]! + count * c[i]!));
+/** Levels worked on at once: they share the reading of the tables and one division. */
+const LEVELS_AT_ONCE = 4;
+const LEAST_SQUARE = LEAST_SIEMENS * LEAST_SIEMENS;
+
+function levelsInto(q: Quadratic, counts: Float64Array, out: Float64Array): void {
+  const m = q.a.length;
+  let level = 0;
+  for (; !q.delicate && level + LEVELS_AT_ONCE <= counts.length; level += LEVELS_AT_ONCE) {
+    fourLevelsInto(q, counts.subarray(level, level + LEVELS_AT_ONCE), out, level * m);
+  }
+  for (; level < counts.length; level++) oneLevelInto(q, counts[level]!, out, level * m);
+}
+
+// 1/√q of four levels: one division gives 1/(q₀·q₁·q₂·q₃), and each 1/q is that times the other three.
+function fourLevelsInto({ a, b, c }: Quadratic, counts: Float64Array, out: Float64Array, offset: number): void {
+  const m = a.length;
+  const [n0, n1, n2, n3] = [counts[0]!, counts[1]!, counts[2]!, counts[3]!];
+  const [second, third, fourth] = [offset + m, offset + 2 * m, offset + 3 * m];
+  for (let i = 0; i < m; i++) {
+    const ai = a[i]!;
+    const bi = b[i]!;
+    const ci = c[i]!;
+    const q0 = ai + n0 * (bi + n0 * ci);
+    const q1 = ai + n1 * (bi + n1 * ci);
+    const q2 = ai + n2 * (bi + n2 * ci);
+    const q3 = ai + n3 * (bi + n3 * ci);
+    const inverse = 1 / (q0 * q1 * (q2 * q3));
+    const first2 = inverse * (q2 * q3);
+    const last2 = inverse * (q0 * q1);
+    out[offset + i] = Math.sqrt(q1 * first2);
+    out[second + i] = Math.sqrt(q0 * first2);
+    out[third + i] = Math.sqrt(q3 * last2);
+    out[fourth + i] = Math.sqrt(q2 * last2);
+  }
+}
+
+function oneLevelInto({ a, b, c }: Quadratic, count: number, out: Float64Array, offset: number): void {
+  for (let i = 0; i < a.length; i++) {
+    out[offset + i] = 1 / Math.sqrt(Math.max(LEAST_SQUARE, a[i]! + count * (b[i]! + count * c[i]!)));
+  }
 }
 
 /**
@@ -69,20 +115,19 @@ export function scanBusesInto(
     numeratorInto(bank, other, stage, q);
     return q;
   });
-  const inverse = new Float64Array(m);
-  for (let level = 0; level < counts.length; level++) {
-    inverseInto(below, counts[level]!, inverse);
-    for (let bus = 0; bus < buses.length; bus++) {
-      const offset = (bus * counts.length + level) * m;
-      const q = above[bus]!;
-      if (q === null) rootInto(inverse, out, offset);
-      else quotientInto(q, counts[level]!, inverse, out, offset);
-    }
+  const atBus = (bus: number): Float64Array => out.subarray(bus * counts.length * m, (bus + 1) * counts.length * m);
+  const bankBus = above.indexOf(null);
+  const own = bankBus < 0 ? new Float64Array(counts.length * m) : atBus(bankBus);
+  levelsInto(below, counts, own);
+  for (let bus = 0; bus < buses.length; bus++) {
+    const q = above[bus]!;
+    if (q !== null) quotientsInto(q, counts, own, atBus(bus));
+    else if (bus !== bankBus) atBus(bus).set(own);
   }
 }
 
 function emptyQuadratic(m: number): Quadratic {
-  return { a: new Float64Array(m), b: new Float64Array(m), c: new Float64Array(m) };
+  return { a: new Float64Array(m), b: new Float64Array(m), c: new Float64Array(m), delicate: false };
 }
 
 // |Y₀·z_ii + n·y·w|² as a quadratic in n.
@@ -111,25 +156,15 @@ function numeratorInto(
   }
 }
 
-function inverseInto({ a, b, c }: Quadratic, count: number, inverse: Float64Array): void {
-  for (let i = 0; i < a.length; i++) inverse[i] = 1 / (a[i]! + count * (b[i]! + count * c[i]!));
-}
-
-function rootInto(inverse: Float64Array, out: Float64Array, offset: number): void {
-  for (let i = 0; i < inverse.length; i++) out[offset + i] = Math.sqrt(inverse[i]!);
-}
-
-// Five parameters: an innermost kernel, no object a level and bus.
-// biome-ignore lint/complexity/useMaxParams: see above
-function quotientInto(
-  { a, b, c }: Quadratic,
-  count: number,
-  inverse: Float64Array,
-  out: Float64Array,
-  offset: number,
-): void {
-  for (let i = 0; i < a.length; i++) {
-    out[offset + i] = Math.sqrt((a[i]! + count * (b[i]! + count * c[i]!)) * inverse[i]!);
+// |Z_ii| = |Y₀·z_ii + n·y·w|·|Z_bb|, the latter being there already.
+function quotientsInto({ a, b, c }: Quadratic, counts: Float64Array, own: Float64Array, out: Float64Array): void {
+  const m = a.length;
+  for (let level = 0; level < counts.length; level++) {
+    const count = counts[level]!;
+    const offset = level * m;
+    for (let i = 0; i < m; i++) {
+      out[offset + i] = own[offset + i]! * Math.sqrt(a[i]! + count * (b[i]! + count * c[i]!));
+    }
   }
 }
 

@@ -1,5 +1,6 @@
 import type { StageGroup } from '../layout/bank.js';
 import { stageOhm } from '../layout/stage.js';
+import { resistanceGrowth } from '../quantity/resistance-growth.js';
 import type { ComplexColumn } from './bus-admittance.js';
 import type { ToleranceFactors } from './corners.js';
 
@@ -50,7 +51,7 @@ export function stageAdmittance(branch: StageBranch, ordersH: Float64Array): Com
   const out: ComplexColumn = { re: new Float64Array(n), im: new Float64Array(n) };
   for (let i = 0; i < n; i++) {
     const h = ordersH[i]!;
-    const r = branch.resistanceOhm === 0 ? 0 : branch.resistanceOhm * h ** branch.resistanceExponent;
+    const r = branch.resistanceOhm === 0 ? 0 : branch.resistanceOhm * resistanceGrowth(h, branch.resistanceExponent);
     const x = h * branch.inductiveOhm - branch.capacitiveOhm / h;
     const square = r * r + x * x;
     out.re[i] = r / square;

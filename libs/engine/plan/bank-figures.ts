@@ -3,25 +3,25 @@ import { CAPACITOR_RULES } from '../duty/rules.js';
 import type { Bank, StageGroup } from '../layout/bank.js';
 import { capacitorV, effectiveKvar, ratedA, stageOhm, tunedOrderH } from '../layout/stage.js';
 import { type Figure, figure } from './figure.js';
-import type { Result } from './result.js';
-import type { Study } from './study.js';
+import type { Judged } from './judge-basis.js';
+import type { BankResult } from './result.js';
 
 /**
  * Figures of the bank and its groups: kvar, capacitor voltage, tuned order, resonance, discharge, inrush, conductor.
- * @param study site and record
+ * @param judged settled site and its network
  * @param bank the bank
  * @param result the result so far
  * @returns figures; none for an empty bank
  * @source method-figures
  */
-export function bankFigures(study: Study, bank: Bank, result: Result): Figure[] {
+export function bankFigures(judged: Judged, bank: Bank, result: BankResult): Figure[] {
   if (bank.groups.length === 0) return [];
-  const { nominalV, rules } = study.site;
+  const { nominalV, rules } = judged.site;
   const each = bank.groups.map((group) => effectiveKvar(group, nominalV));
   const terms = each.map((_, g) => (each.length === 1 ? 'n · Q_s' : `n_${g + 1} · Q_${g + 1}`));
   const total = result.bank.effectiveKvar;
   return [
-    ...bank.groups.flatMap((group, g) => groupFigures(study, group, g, result)),
+    ...bank.groups.flatMap((group, g) => groupFigures(judged, group, g, result)),
     figure(
       'bank.effectiveKvar',
       { value: total, unit: 'kvar' },
@@ -55,7 +55,7 @@ export function bankFigures(study: Study, bank: Bank, result: Result): Figure[] 
 }
 
 // Closed form, damping left out, all stages in: a check on the scan. Only one reactor ratio has one.
-function resonanceFigure(bank: Bank, result: Result): Figure[] {
+function resonanceFigure(bank: Bank, result: BankResult): Figure[] {
   const ratios = new Set(bank.groups.map((group) => group.reactorPct));
   const [reactorPct] = ratios;
   if (ratios.size !== 1 || reactorPct === undefined) return [];
@@ -76,8 +76,8 @@ function resonanceFigure(bank: Bank, result: Result): Figure[] {
   ];
 }
 
-function groupFigures(study: Study, group: StageGroup, g: number, result: Result): Figure[] {
-  const { nominalV } = study.site;
+function groupFigures(judged: Judged, group: StageGroup, g: number, result: BankResult): Figure[] {
+  const { nominalV } = judged.site;
   const p = group.reactorPct / 100;
   const id = (name: string): string => `bank.group[${g}].${name}`;
   const found = [
@@ -125,12 +125,12 @@ function groupFigures(study: Study, group: StageGroup, g: number, result: Result
     const head = { formula: '1 / √(p)', source: 'method, bank' };
     found.push(figure(id('tunedOrderH'), { value: tuned, unit: '' }, head, [['p', p, '']]));
   }
-  return [...found, ...chargeFigures(study, group, g, result), ...inrushFigures(study, group, g, result)];
+  return [...found, ...chargeFigures(judged, group, g, result), ...inrushFigures(judged, group, g, result)];
 }
 
-function chargeFigures(study: Study, group: StageGroup, g: number, result: Result): Figure[] {
+function chargeFigures(judged: Judged, group: StageGroup, g: number, result: BankResult): Figure[] {
   const charge = result.charge.stages[g]!;
-  const source = CAPACITOR_RULES[study.site.rules].dischargeSource;
+  const source = CAPACITOR_RULES[judged.site.rules].dischargeSource;
   const id = (name: string): string => `charge.stages[${g}].${name}`;
   const fittedOhm = group.dischargeOhm;
   const found = [
@@ -141,7 +141,7 @@ function chargeFigures(study: Study, group: StageGroup, g: number, result: Resul
       [
         ['Q_N', group.ratedKvar, 'kvar'],
         ['U_N', group.ratedV, 'V'],
-        ['f', study.site.frequencyHz, 'Hz'],
+        ['f', judged.site.frequencyHz, 'Hz'],
       ],
     ),
     figure(
@@ -170,7 +170,7 @@ function chargeFigures(study: Study, group: StageGroup, g: number, result: Resul
     );
   }
   if (fittedOhm !== null) {
-    const natural = naturalReconnectDelayS([group], study.site.rules, study.site.frequencyHz);
+    const natural = naturalReconnectDelayS([group], judged.site.rules, judged.site.frequencyHz);
     found.push(
       figure(
         id('timeToTenPctS'),
@@ -186,8 +186,8 @@ function chargeFigures(study: Study, group: StageGroup, g: number, result: Resul
   return found;
 }
 
-function inrushFigures(study: Study, group: StageGroup, g: number, result: Result): Figure[] {
-  const { nominalV } = study.site;
+function inrushFigures(judged: Judged, group: StageGroup, g: number, result: BankResult): Figure[] {
+  const { nominalV } = judged.site;
   const own = stageOhm(group);
   const supplyOhm = (nominalV * nominalV) / (result.network.shortCircuitMva * 1e6);
   const formula = '√(2) · U / √(3) / √(X_c · X_l)';
@@ -203,7 +203,7 @@ function inrushFigures(study: Study, group: StageGroup, g: number, result: Resul
   if (stage.ontoBankPeakA === null || stage.ontoBankHz === null) return found;
   // Peak and frequency give back both reactances: X_c·X_l from the one, X_c/X_l from the other.
   const product = ((Math.SQRT2 * nominalV) / Math.sqrt(3) / stage.ontoBankPeakA) ** 2;
-  const quotient = (stage.ontoBankHz / study.site.frequencyHz) ** 2;
+  const quotient = (stage.ontoBankHz / judged.site.frequencyHz) ** 2;
   found.push(
     figure(`inrush.stages[${g}].ontoBankPeakA`, { value: stage.ontoBankPeakA, unit: 'A' }, { formula, source }, [
       ['U', nominalV, 'V'],

@@ -1,14 +1,12 @@
-import { NEAR_RATIO } from '../duty/duty-row.js';
-import type { JudgeBasis } from '../duty/judge-bank.js';
-import { quickJudge } from '../duty/quick-judge.js';
-import { CAPACITOR_RULES, graver, type Verdict } from '../duty/rules.js';
+import type { Verdict } from '../duty/rules.js';
 import type { Bank } from '../layout/bank.js';
-import { bankOf, type Layout, layouts, preferred, type SettledCatalogue, type Sized } from '../layout/candidates.js';
+import type { SettledCatalogue } from '../layout/candidates.js';
 import { effectiveKvar } from '../layout/stage.js';
 import type { Control } from '../operation/control.js';
 import { meetsTarget } from '../operation/operation.js';
 import { type Remark, Stopped, type Watch } from '../problem.js';
-import { basisOf, judge, overallVerdict } from './judge-basis.js';
+import { BankCandidates, type Candidate } from './bank-candidates.js';
+import { judge, overallVerdict } from './judge-basis.js';
 import { overCorrectionKvar } from './reasons.js';
 import { settleControl } from './settle-bank.js';
 import type { Site } from './site.js';
@@ -22,25 +20,6 @@ export interface Chosen {
   assumptions: Remark[];
   shortOf: 'onlyWatch' | 'targetOutOfReach' | 'onlyAvoid' | null;
 }
-
-/** One layout with one reactor ratio; built at the least rated voltage at which the voltage duties are clear. */
-interface Family {
-  layout: Layout;
-  reactorPct: number;
-  /** rated voltages that carry the fundamental, ascending [V] */
-  voltages: readonly number[];
-  /** null where no voltage is clear; absent until it was asked for */
-  built?: { ratedV: number; flows: Verdict } | null;
-}
-
-/** A family at one of its voltages; a candidate only where that is the voltage it is built at. */
-interface Candidate extends Sized {
-  family: Family;
-  ratedV: number;
-  bank: Bank;
-}
-
-const REACTOR_QUALITY = 30;
 
 /**
  * Walks the candidates in their order of preference and takes the first that meets the target in every billing month,
@@ -63,23 +42,22 @@ class Chooser {
   readonly #site: Site;
   readonly #catalogue: SettledCatalogue;
   readonly #watch: Watch | undefined;
-  readonly #families = new Map<string, Family>();
+  readonly #candidates: BankCandidates;
 
   constructor(study: Study, site: Site, catalogue: SettledCatalogue, watch: Watch | undefined) {
     this.#study = study;
     this.#site = site;
     this.#catalogue = catalogue;
     this.#watch = watch;
+    this.#candidates = new BankCandidates(study, site, catalogue);
   }
 
   choose(): Chosen | null {
-    const layoutsLeft = layouts(this.#catalogue);
-    const mostKvar = this.#mostKvar(layoutsLeft);
-    const boundKvar = leastTotalKvar(this.#study, mostKvar);
-    const reaching = boundKvar === null ? [] : this.#candidates(layoutsLeft, boundKvar);
+    const boundKvar = leastTotalKvar(this.#study, this.#candidates.mostKvar());
+    const reaching = boundKvar === null ? [] : this.#list(boundKvar);
     const within = this.#preferredWithin(reaching);
     if (within !== null) return within;
-    const all = this.#candidates(layoutsLeft, 0).filter((candidate) => this.#flows(candidate) !== null);
+    const all = this.#list(0).filter((candidate) => this.#flows(candidate) !== null);
     if (all.length === 0) return null;
     const met = reaching.filter((candidate) => this.#flows(candidate) !== null);
     return this.#nearest(all) ?? this.#despiteLimits(met.length > 0 ? met : all);
@@ -101,83 +79,18 @@ class Chooser {
     return watched;
   }
 
-  // No candidate is larger: every layout at the least voltage and the greatest reactor ratio.
-  #mostKvar(found: readonly Layout[]): number {
-    const ratedV = this.#catalogue.ratedV[0]!;
-    const reactorPct = this.#catalogue.reactorPct[this.#catalogue.reactorPct.length - 1]!;
-    return found.reduce((most, layout) => Math.max(most, this.#totalKvar(this.#bank(layout, ratedV, reactorPct))), 0);
-  }
-
-  #bank(layout: Layout, ratedV: number, reactorPct: number): Bank {
-    const { nominalV } = this.#study.site;
-    const built = { ratedV, nominalV, reactorPct, reactorQuality: REACTOR_QUALITY, catalogue: this.#catalogue };
-    return bankOf(layout, built);
-  }
-
-  #totalKvar(bank: Bank): number {
-    return bank.groups.reduce((sum, g) => sum + g.count * effectiveKvar(g, this.#study.site.nominalV), 0);
-  }
-
   #step(fraction: number): void {
     if (this.#watch?.stopped()) throw new Stopped('stopped while choosing the bank');
     this.#watch?.report(0.1 + 0.8 * fraction);
   }
 
-  // Every layout, reactor ratio and voltage that could be built, in order of preference; which of a family's voltages it
-  // is built at is judged when a candidate is first looked at. A higher voltage only makes the bank smaller, so a layout
-  // that falls below the bound is done.
-  #candidates(found: readonly Layout[], boundKvar: number): Candidate[] {
+  #list(boundKvar: number): Candidate[] {
     const greatestKvar = this.#greatestKvar();
-    const candidates: Candidate[] = [];
-    for (const reactorPct of this.#catalogue.reactorPct) {
-      const voltages = this.#catalogue.ratedV.filter((ratedV) => this.#carriesFundamental(ratedV, reactorPct));
-      for (const layout of found) {
-        const family = this.#family(layout, reactorPct, voltages);
-        for (const ratedV of voltages) {
-          const candidate = this.#candidate(family, ratedV);
-          if (candidate.effectiveKvar < boundKvar) break;
-          if (!this.#tooLarge(candidate, greatestKvar)) candidates.push(candidate);
-        }
-      }
-    }
-    return candidates.sort(preferred);
+    return this.#candidates.list(boundKvar, (candidate) => this.#tooLarge(candidate, greatestKvar));
   }
 
-  #family(layout: Layout, reactorPct: number, voltages: readonly number[]): Family {
-    const key = `${layout.count} ${layout.sizeKvar} ${layout.halves} ${reactorPct}`;
-    const known = this.#families.get(key) ?? { layout, reactorPct, voltages };
-    this.#families.set(key, known);
-    return known;
-  }
-
-  #candidate(family: Family, ratedV: number): Candidate {
-    const { layout, reactorPct } = family;
-    const bank = this.#bank(layout, ratedV, reactorPct);
-    const kvar = bank.groups.map((group) => effectiveKvar(group, this.#study.site.nominalV));
-    return {
-      family,
-      ratedV,
-      bank,
-      effectiveKvar: this.#totalKvar(bank),
-      stages: layout.count + layout.halves,
-      smallestKvar: Math.min(...kvar),
-      reactorPct,
-    };
-  }
-
-  // Verdict of the flows alone, which the full judgement is never milder than; null at a voltage that is not the family's.
-  #flows({ family, ratedV }: Candidate): Verdict | null {
-    if (family.built === undefined) family.built = this.#leastClearVoltage(family);
-    return family.built?.ratedV === ratedV ? family.built.flows : null;
-  }
-
-  #leastClearVoltage({ layout, reactorPct, voltages }: Family): { ratedV: number; flows: Verdict } | null {
-    for (const ratedV of voltages) {
-      const bank = this.#bank(layout, ratedV, reactorPct);
-      const quick = quickJudge(this.#study.model, bank, this.#basis(bank));
-      if (quick.voltages === 'clear') return { ratedV, flows: this.#opened(quick.verdict) };
-    }
-    return null;
+  #flows(candidate: Candidate): Verdict | null {
+    return this.#candidates.flows(candidate);
   }
 
   // Most that could be wanted of a bank, as effective kvar at nominal voltage.
@@ -189,33 +102,14 @@ class Chooser {
     }, 0);
   }
 
-  // Fundamental voltage alone, in the corner of greatest p: a cheap necessary condition of clear voltage duties.
-  #carriesFundamental(ratedV: number, reactorPct: number): boolean {
-    const { rules, nominalV, highestV } = this.#study.site;
-    const growth = this.#study.model.corners.factors.map((f) => f.capacitanceFactor * f.inductanceFactor);
-    const rise = 1 / (1 - (reactorPct / 100) * Math.max(...growth));
-    const { continuousVoltageRatio, highestVoltageRatio } = CAPACITOR_RULES[rules];
-    const highest = (highestV * rise) / (highestVoltageRatio * ratedV);
-    const continuous = continuousVoltageRatio === null ? 0 : (nominalV * rise) / (continuousVoltageRatio * ratedV);
-    return rise > 0 && Math.max(highest, continuous) <= NEAR_RATIO.voltage;
-  }
-
   // Where every stage is free again by the next interval, one that no load calls for is never connected and changes
   // nothing; where a delay lasts longer it may stand in for another.
   #tooLarge({ bank, effectiveKvar: totalKvar, smallestKvar }: Candidate, greatestKvar: number): boolean {
     const { maxTotalKvar } = this.#catalogue;
     if (maxTotalKvar !== null) return totalKvar > maxTotalKvar;
-    if (this.#basis(bank).reconnectDelayS > this.#study.record.intervalS) return false;
+    if (this.#candidates.basis(bank).reconnectDelayS > this.#study.record.intervalS) return false;
     const largestKvar = Math.max(...bank.groups.map((group) => effectiveKvar(group, this.#study.site.nominalV)));
     return totalKvar - largestKvar - smallestKvar >= greatestKvar;
-  }
-
-  #opened(verdict: Verdict): Verdict {
-    return this.#study.site.recordedBank.state === 'unknown' ? graver(verdict, 'watch') : verdict;
-  }
-
-  #basis(bank: Bank): JudgeBasis {
-    return basisOf(this.#study, settleControl(this.#site.control, bank, this.#study.site).control);
   }
 
   #setPoints(): number[] {

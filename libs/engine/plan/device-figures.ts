@@ -10,33 +10,33 @@ import { effectiveKvar, stageOhm } from '../layout/stage.js';
 import { summarizeNetwork } from '../network/network-check.js';
 import type { Control } from '../operation/control.js';
 import { type Figure, figure } from './figure.js';
-import type { Study } from './study.js';
+import type { Judged } from './judge-basis.js';
 
 const PRACTICE = 'common practice';
 
 /**
  * Figures of the devices: fault currents, heat and air, response current, and per group voltage change, reactor and ripple.
- * @param study site and record
+ * @param judged settled site and its network
  * @param bank the bank, not empty
  * @param control settings
  * @param equipment the numbers behind the table of devices
  * @returns figures
  * @source method-figures
  */
-export function deviceFigures(study: Study, bank: Bank, control: Control, equipment: Devices): Figure[] {
+export function deviceFigures(judged: Judged, bank: Bank, control: Control, equipment: Devices): Figure[] {
   return [
-    ...bank.groups.flatMap((_, g) => groupFigures(study, bank, g, equipment)),
-    ...faultFigures(study, equipment.fault),
-    ...settingFigures(study, bank),
+    ...bank.groups.flatMap((_, g) => groupFigures(judged, bank, g, equipment)),
+    ...faultFigures(judged, equipment.fault),
+    ...settingFigures(judged, bank),
     ...heatFigures(equipment.heat),
-    ...responseFigures(study, bank, control),
+    ...responseFigures(judged, bank, control),
   ];
 }
 
-function groupFigures(study: Study, bank: Bank, g: number, { demand }: Devices): Figure[] {
-  const { nominalV, rules, supply, frequencyHz } = study.site;
+function groupFigures(judged: Judged, bank: Bank, g: number, { demand }: Devices): Figure[] {
+  const { nominalV, rules, supply, frequencyHz } = judged.site;
   const group = bank.groups[g]!;
-  const { shortCircuitMinMva } = summarizeNetwork(study.model, []);
+  const { shortCircuitMinMva } = summarizeNetwork(judged.model, []);
   const kvar = effectiveKvar(group, nominalV);
   const found = [
     figure(
@@ -92,8 +92,8 @@ function groupFigures(study: Study, bank: Bank, g: number, { demand }: Devices):
   return found;
 }
 
-function faultFigures(study: Study, fault: FaultCurrent): Figure[] {
-  const { nominalV } = study.site;
+function faultFigures(judged: Judged, fault: FaultCurrent): Figure[] {
+  const { nominalV } = judged.site;
   const edition = { source: FAULT_CURRENT_EDITION };
   return [
     figure(
@@ -120,8 +120,8 @@ function faultFigures(study: Study, fault: FaultCurrent): Figure[] {
   ];
 }
 
-function settingFigures(study: Study, bank: Bank): Figure[] {
-  const bankA = bankCurrentA(bank, study.site.nominalV);
+function settingFigures(judged: Judged, bank: Bank): Figure[] {
+  const bankA = bankCurrentA(bank, judged.site.nominalV);
   return [
     figure(
       'devices.instantaneousMinA',
@@ -165,8 +165,8 @@ function heatFigures(heat: CabinetHeat): Figure[] {
   ];
 }
 
-function responseFigures(study: Study, bank: Bank, control: Control): Figure[] {
-  const { nominalV, facts } = study.site;
+function responseFigures(judged: Judged, bank: Bank, control: Control): Figure[] {
+  const { nominalV, facts } = judged.site;
   const { currentTransformer } = facts;
   if (currentTransformer === null || bank.groups.every(({ fixed }) => fixed)) return [];
   return [

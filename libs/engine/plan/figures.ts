@@ -1,9 +1,7 @@
 import type { Bank } from '../layout/bank.js';
-import { strongestInto } from '../network/network-check.js';
-import { neutralA } from '../network/summation.js';
-import { supplyPath } from '../supply/supply-path.js';
 import { bankFigures } from './bank-figures.js';
 import { type Figure, figure } from './figure.js';
+import { dutyFigures, neutralFigure, supplyFigures } from './network-figures.js';
 import type { Result } from './result.js';
 import type { Operated, Study } from './study.js';
 
@@ -87,82 +85,6 @@ function requirementFigures(study: Study, result: Result): Figure[] {
   ];
 }
 
-function supplyFigures(study: Study, result: Result): Figure[] {
-  const { supply, nominalV } = study.site;
-  if (study.model.nodal !== null) return [nodalFigure(study, result)];
-  const ends = [
-    {
-      id: 'network.shortCircuitMva',
-      fault: supply.faultLevelMva.max,
-      end: 'least' as const,
-      value: result.network.shortCircuitMva,
-    },
-    {
-      id: 'network.shortCircuitMinMva',
-      fault: supply.faultLevelMva.min,
-      end: 'most' as const,
-      value: result.network.shortCircuitMinMva,
-    },
-  ];
-  return ends.flatMap(({ id, fault, end, value }) => {
-    const path = supplyPath(supply, nominalV, fault, end);
-    const transformer = parallelOhm(path.transformers);
-    return [
-      figure(
-        `${id}.sourceMohm`,
-        { value: path.source.xOhm * 1000, unit: 'mΩ' },
-        { formula: 'U^2 / S_q / √(1 + ρ^2) / 1000', source: 'IEC 60909-0, no voltage factor' },
-        [
-          ['U', nominalV, 'V'],
-          ['S_q', fault, 'MVA'],
-          ['ρ', supply.rOverX, ''],
-        ],
-      ),
-      figure(
-        id,
-        { value, unit: 'MVA' },
-        { formula: 'U^2 / √((R_q + R_t)^2 + (X_q + X_t)^2) / 1000', source: 'method, network' },
-        [
-          ['U', nominalV, 'V'],
-          ['R_q', path.source.rOhm * 1000, 'mΩ'],
-          ['R_t', transformer.rOhm * 1000, 'mΩ'],
-          ['X_q', path.source.xOhm * 1000, 'mΩ'],
-          ['X_t', transformer.xOhm * 1000, 'mΩ'],
-        ],
-      ),
-    ];
-  });
-}
-
-// In a network of several buses the strongest standing's own impedance; the path alone would give another number.
-function nodalFigure(study: Study, result: Result): Figure {
-  const z = new Float64Array(2);
-  strongestInto(study.model, z);
-  return figure(
-    'network.shortCircuitMva',
-    { value: result.network.shortCircuitMva, unit: 'MVA' },
-    { formula: 'U^2 / √(R^2 + X^2) / 1000', source: 'method, network, the strongest standing' },
-    [
-      ['U', study.site.nominalV, 'V'],
-      ['R', 1000 * z[0]!, 'mΩ'],
-      ['X', 1000 * z[1]!, 'mΩ'],
-    ],
-  );
-}
-
-function parallelOhm(parts: readonly { rOhm: number; xOhm: number }[]): { rOhm: number; xOhm: number } {
-  if (parts.length === 0) return { rOhm: 0, xOhm: 0 };
-  let g = 0;
-  let b = 0;
-  for (const { rOhm, xOhm } of parts) {
-    const square = rOhm * rOhm + xOhm * xOhm;
-    g += rOhm / square;
-    b += xOhm / square;
-  }
-  const square = g * g + b * b;
-  return { rOhm: g / square, xOhm: b / square };
-}
-
 function operationFigures(study: Study, bank: Bank, operated: Operated, result: Result): Figure[] {
   const found: Figure[] = [];
   const lowest = result.operation.months
@@ -180,18 +102,7 @@ function operationFigures(study: Study, bank: Bank, operated: Operated, result: 
     );
   }
   if (bank.groups.length > 0) found.push(...transformerFigures(study, operated));
-  const neutral = neutralA(study.site.loads);
-  if (neutral > 0) {
-    found.push(
-      figure(
-        'loads.neutralA',
-        { value: neutral, unit: 'A' },
-        { formula: '3 · I_0', source: 'derived: zero-sequence currents add in the neutral' },
-        [['I_0', neutral / 3, 'A']],
-      ),
-    );
-  }
-  return found;
+  return [...found, ...neutralFigure(study)];
 }
 
 // At the interval of greatest apparent power before the bank; what the transformer carries is the bus power.
@@ -241,21 +152,4 @@ function distortionAtPeakPct(study: Study): number {
   const { excitation, loadA } = study.model;
   const square = excitation.injectedA.reduce((sum, a) => sum + a * a, 0);
   return loadA > 0 ? (100 * Math.sqrt(square)) / loadA : 0;
-}
-
-function dutyFigures(result: Result): Figure[] {
-  return result.duties.flatMap((duty, k) => {
-    if (duty.limit === null || duty.ratio === null || !(duty.limit > 0)) return [];
-    return [
-      figure(
-        `duties[${k}].sharePct`,
-        { value: 100 * duty.ratio, unit: '%' },
-        { formula: '100 · x / x_max', source: duty.source },
-        [
-          ['x_max', duty.limit, duty.unit],
-          ['x', duty.value, duty.unit],
-        ],
-      ),
-    ];
-  });
 }

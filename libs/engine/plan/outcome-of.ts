@@ -1,30 +1,19 @@
-import { ageing } from '../duty/ageing.js';
-import { type Devices, devices } from '../duty/devices.js';
-import type { Judgement } from '../duty/judge-bank.js';
-import { limitsPoint } from '../duty/limits-point.js';
 import { marginMap } from '../duty/margin-map.js';
-import { type MeasuredCheck, measuredCheck } from '../duty/measured-check.js';
-import { CAPACITOR_RULES, graver, type Verdict } from '../duty/rules.js';
-import type { Bank } from '../layout/bank.js';
-import { bankLevels, summarizeBank } from '../layout/levels.js';
+import { graver, type Verdict } from '../duty/rules.js';
 import type { Money } from '../money/money-result.js';
-import type { MeasuredDistortion } from '../network/loads.js';
-import type { Control } from '../operation/control.js';
 import { summarizeOperation } from '../operation/operation.js';
 import type { Remark } from '../problem.js';
 import { cautions } from './cautions.js';
 import { deviceFigures } from './device-figures.js';
 import { figures } from './figures.js';
-import { basisOf, judge, overallVerdict } from './judge-basis.js';
-import type { Outcome, Rival } from './outcome.js';
+import { basisOf, overallVerdict } from './judge-basis.js';
+import { type BankChoice, judgeWhole, rivalOf } from './judged-bank.js';
+import type { Outcome } from './outcome.js';
 import { reasons } from './reasons.js';
-import { type Beside, copyNote, pointAssumption, reasonsBeside, verdictBeside } from './reasons-beside.js';
+import { copyNote, pointAssumption, reasonsBeside, verdictBeside } from './reasons-beside.js';
 import type { Result } from './result.js';
 import { type Operated, operate, type Study } from './study.js';
-import type { PricedWays } from './weighed-bank.js';
-
-/** Reactor ratio of the comparison where the bank is plain [%]. */
-const RIVAL_REACTOR_PCT = 7;
+import type { WaysWeighed } from './weighed-bank.js';
 
 /** What is said of a bank besides what its own figures say. */
 export interface Said {
@@ -35,9 +24,7 @@ export interface Said {
 }
 
 /** A bank and its controller, and what led to them. */
-export interface Choice {
-  bank: Bank;
-  control: Control;
+export interface Choice extends BankChoice {
   said: Said;
   /** a plan that keeps the site's own bank */
   isOwn?: boolean;
@@ -46,7 +33,7 @@ export interface Choice {
   /** what it costs and saves, from the bank simulated */
   money?: (operated: Operated) => Money;
   /** what was weighed by its money */
-  priced?: PricedWays | undefined;
+  priced?: WaysWeighed | undefined;
 }
 
 /**
@@ -59,36 +46,29 @@ export interface Choice {
  */
 export function outcomeOf(kind: Outcome['kind'], study: Study, choice: Choice): Outcome {
   const { bank, control, said } = choice;
-  const levels = bankLevels(bank, study.site.nominalV);
   const operated = choice.operated ?? operate(study, bank, control);
-  const judgement = judge(study, bank, control);
-  const bankSummary = summarizeBank(bank, levels, study.site.nominalV);
-  const conductorMinA =
-    (CAPACITOR_RULES[study.site.rules].conductorRatio * bankSummary.effectiveKvar * 1000) /
-    (Math.sqrt(3) * study.site.nominalV);
-  const { beside, equipment } = besideOf(choice.isOwn === true ? 'assess' : kind, study, {
-    bank,
-    control,
-    judgement,
-    conductorMinA,
-  });
+  const judged = judgeWhole(choice.isOwn === true ? 'assess' : kind, study, choice);
+  const { levels, judgement, beside, equipment } = judged;
   const result: Result = {
     record: study.recordSummary,
     requirement: study.requirement,
-    bank: bankSummary,
+    bank: judged.summary,
     control,
     operation: summarizeOperation(operated, study.months, study.target, levels),
     network: judgement.network,
     duties: judgement.duties,
     charge: { stages: judgement.charge },
     inrush: { stages: judgement.inrush },
-    conductorMinA,
+    conductorMinA: judged.conductorMinA,
     ...beside,
     robustness: null,
     reactorTrials: [],
     spareWays: [],
     money: choice.money?.(operated) ?? null,
-    verdict: graver(graver(overallVerdict(study, judgement), said.atBest ?? 'clear'), verdictBeside(beside)),
+    verdict: [said.atBest ?? 'clear', supported(study), verdictBeside(beside)].reduce(
+      graver,
+      overallVerdict(study, judgement),
+    ),
     reasons: [
       ...said.reasons,
       ...reasons(study, bank, operated, judgement),
@@ -118,36 +98,13 @@ export function outcomeOf(kind: Outcome['kind'], study: Study, choice: Choice): 
     loadA: study.model.loadA,
     margins: marginMap(study.model, bank, levels, basisOf(study, control)),
     rival: rivalOf(study, choice, result.verdict),
-    priced: choice.priced ?? null,
+    priced: choice.priced === undefined ? null : { ...choice.priced, record: study.record, zone: study.zone },
   };
 }
 
-// A plan does without what the site's own bank has: it says nothing of the one that is proposed.
-function besideOf(
-  kind: Outcome['kind'],
-  study: Study,
-  choice: { bank: Bank; control: Control; judgement: Judgement; conductorMinA: number },
-): { beside: Beside; equipment: Devices | null } {
-  const { bank, control, judgement, conductorMinA } = choice;
-  const { model, site } = study;
-  const judge = basisOf(study, control);
-  const facts = { ...site.facts, bank: kind === 'plan' ? null : site.facts.bank };
-  const levels = bankLevels(bank, site.nominalV);
-  const equipment =
-    bank.groups.length === 0 ? null : devices(model, bank, levels, { judge, judgement, control, conductorMinA, facts });
-  const beside = {
-    limits: limitsPoint(model, site),
-    devices: equipment?.rows ?? [],
-    ageing: ageing(model, bank, judge, facts.bank),
-    measured: facts.measured === null ? null : measuredOf(study, kind, bank, facts.measured),
-  };
-  return { beside, equipment };
-}
-
-// With a bank in, a measurement says something of the bank that was in: the site's own, not the one that is proposed.
-function measuredOf(study: Study, kind: Outcome['kind'], bank: Bank, measured: MeasuredDistortion): MeasuredCheck {
-  const compared = kind === 'plan' ? { ...bank, groups: [] } : bank;
-  return measuredCheck(study.model, compared, bankLevels(compared, study.site.nominalV), measured);
+// Limits may be kept on a week of readings; a bank for the year cannot be recommended on it.
+function supported({ recordSummary }: Study): Verdict {
+  return recordSummary.grade === 'insufficient' ? 'watch' : 'clear';
 }
 
 function series(study: Study, operated: Operated): Outcome['series'] {
@@ -160,23 +117,5 @@ function series(study: Study, operated: Operated): Outcome['series'] {
     meterKw: operated.meter.activeKw,
     meterLaggingKvar: operated.meter.laggingKvar,
     meterLeadingKvar: operated.meter.leadingKvar,
-  };
-}
-
-// The same nameplates built the other way: shown beside the bank wherever one of the two is near or over a limit.
-function rivalOf(study: Study, { bank, control }: Choice, verdict: Verdict): Rival | null {
-  const detuned = bank.groups.some((group) => group.reactorPct > 0);
-  if (bank.groups.length === 0 || (!detuned && verdict === 'clear')) return null;
-  const groups = bank.groups.map((group) => ({ ...group, reactorPct: detuned ? 0 : RIVAL_REACTOR_PCT }));
-  const rival = { ...bank, groups };
-  const levels = bankLevels(rival, study.site.nominalV);
-  const margins = marginMap(study.model, rival, levels, basisOf(study, control));
-  const judgement = judge(study, rival, control);
-  return {
-    bank: rival,
-    verdict: overallVerdict(study, judgement),
-    margins,
-    levelsOver: margins.sharePct.filter((row, k) => k > 0 && row.some((share) => share > 100)).length,
-    levelsAll: levels.length - 1,
   };
 }

@@ -2,7 +2,7 @@ import type { MarginMap } from '../duty/margin-map.js';
 import type { Bank } from '../layout/bank.js';
 import type { LoadRecord } from '../record/load-record.js';
 import type { ZoneTable } from '../record/zone-table.js';
-import type { Result } from './result.js';
+import type { BankResult, Result } from './result.js';
 import type { SettledSite } from './settled-site.js';
 import type { PricedWays } from './weighed-bank.js';
 
@@ -36,19 +36,24 @@ export interface Rival {
   levelsAll: number;
 }
 
-/** Everything a page or a paper needs: the settled inputs, the result and the series behind it. */
-export interface Outcome {
+/** A bank judged on its network: what a page or a paper says of it, whatever the load is known from. */
+export interface BankOutcome {
   kind: 'plan' | 'assess';
   site: SettledSite;
-  record: LoadRecord;
-  zone: ZoneTable;
   bank: Bank;
-  result: Result;
-  series: OperationSeries;
+  result: BankResult;
   /** I_L, the load current distortion is held against [A] */
   loadA: number;
   margins: MarginMap;
   rival: Rival | null;
   /** what was weighed by its money, to be weighed again; null without a tariff or a bank */
   priced: PricedWays | null;
+}
+
+/** Everything a page or a paper needs: the settled inputs, the result and the series behind it. */
+export interface Outcome extends BankOutcome {
+  record: LoadRecord;
+  zone: ZoneTable;
+  result: Result;
+  series: OperationSeries;
 }

@@ -7,7 +7,7 @@ import { graver, type Verdict } from '../duty/rules.js';
 import type { Bank } from '../layout/bank.js';
 import type { Control } from '../operation/control.js';
 import { type Remark, remark } from '../problem.js';
-import type { Study } from './study.js';
+import type { Judged } from './judge-basis.js';
 
 /** What is judged beside the network and the duties. */
 export interface Beside {
@@ -32,7 +32,7 @@ export function verdictBeside({ devices, measured }: Beside): Verdict {
 
 /**
  * What devices, measurement, ageing, fast loads and the point judged give to say.
- * @param study site and record
+ * @param judged settled site and its network
  * @param bank the bank
  * @param made settings, and the duties that were judged already
  * @param beside devices, ageing, measurement
@@ -40,7 +40,7 @@ export function verdictBeside({ devices, measured }: Beside): Verdict {
  * @source method-devices, method-measured, method-ageing
  */
 export function reasonsBeside(
-  study: Study,
+  judged: Judged,
   bank: Bank,
   made: { control: Control; duties: readonly Duty[] },
   beside: Beside,
@@ -49,8 +49,8 @@ export function reasonsBeside(
   return [
     ...shortDevices(beside.devices).map(deviceReason),
     ...riseReasons(beside.devices, duties),
-    ...measuredReasons(beside.measured, study.site.facts.measured?.bankKvar ?? 0),
-    ...(bank.groups.length === 0 ? [] : [...ageingReasons(beside.ageing), ...loadReasons(study, control)]),
+    ...measuredReasons(beside.measured, judged.site.facts.measured?.bankKvar ?? 0),
+    ...(bank.groups.length === 0 ? [] : [...ageingReasons(beside.ageing), ...loadReasons(judged, control)]),
     ...pointReasons(beside.limits),
   ];
 }
@@ -130,8 +130,8 @@ function limitReasons(cases: Ageing['cases']): Remark[] {
     });
 }
 
-function loadReasons(study: Study, control: Control): Remark[] {
-  const { fast, photovoltaicKw } = study.site.facts;
+function loadReasons(judged: Judged, control: Control): Remark[] {
+  const { fast, photovoltaicKw } = judged.site.facts;
   const found = fast.map(({ name, swingS, swingKvar }) => {
     const values: Record<string, number | string> = { name, stepDelayS: control.stepDelayS };
     if (swingS !== undefined) values.swingS = swingS;
@@ -150,24 +150,24 @@ function pointReasons({ voltage, points, couplingPoint, atCouplingPoint }: Limit
 
 /**
  * Where a transformer lies between the bus and the network, that the bus is the point of coupling is an assumption.
- * @param study site and record
+ * @param judged settled site and its network
  * @param limits the point judged
  * @returns one line or none
  */
-export function pointAssumption(study: Study, limits: LimitsPoint): Remark[] {
-  const { site } = study;
+export function pointAssumption(judged: Judged, limits: LimitsPoint): Remark[] {
+  const { site } = judged;
   if (site.topology !== null || site.supply.transformers.length === 0 || !limits.atCouplingPoint) return [];
   return [remark('default.limits.point', { point: limits.couplingPoint }, { path: 'meteredAt' })];
 }
 
 /**
  * Where copies of a standard disagree the tighter one is used, and said so where an order present meets it.
- * @param study site and record
+ * @param judged settled site and its network
  * @returns one line or none
  */
-export function copyNote(study: Study): Remark[] {
-  const { limits, emcClass } = study.site;
-  const met = study.model.excitation.ordersH.includes(DISPUTED.orderH);
+export function copyNote(judged: Judged): Remark[] {
+  const { limits, emcClass } = judged.site;
+  const met = judged.model.excitation.ordersH.includes(DISPUTED.orderH);
   if (limits.edition !== DISPUTED.edition || emcClass !== DISPUTED.emcClass || !met) return [];
   const { edition, orderH, usedPct, otherPct } = DISPUTED;
   return [remark('limits.tighterCopy', { edition, orderH, usedPct, otherPct }, { path: 'limits.edition' })];

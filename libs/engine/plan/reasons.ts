@@ -1,12 +1,10 @@
-import { naturalReconnectDelayS } from '../duty/charge.js';
-import type { Duty } from '../duty/duty-row.js';
 import type { Judgement } from '../duty/judge-bank.js';
-import { PEAK_REACH_H } from '../duty/judge-bank.js';
 import type { Bank } from '../layout/bank.js';
 import { effectiveKvar } from '../layout/stage.js';
 import { meetsTarget } from '../operation/operation.js';
 import { type Remark, remark } from '../problem.js';
-import { overwhelmingKva } from './judge-basis.js';
+import { checkAgainstSupply } from '../supply/check-against-supply.js';
+import { judgementReasons, reconnectionReasons } from './judgement-reasons.js';
 import type { Operated, Study } from './study.js';
 
 /** A record shorter than this says little about a year [days]. */
@@ -23,62 +21,21 @@ const YEAR_DAYS = 360;
  * @source method-limits
  */
 export function reasons(study: Study, bank: Bank, operated: Operated, judgement: Judgement): Remark[] {
-  const duties = (verdict: Duty['verdict']): Duty[] => judgement.duties.filter((duty) => duty.verdict === verdict);
   return [
-    ...duties('avoid').map((duty) => dutyReason('limit.exceeded', duty)),
-    ...duties('watch').map((duty) => dutyReason(watchCode(duty), duty)),
-    ...supplyReasons(study, judgement),
-    ...networkReasons(study, bank, judgement),
+    ...judgementReasons(study, bank, judgement),
     ...recordReasons(study),
     ...operationReasons(study, bank, operated),
-    ...reconnectionReasons(study, bank, operated, judgement),
+    ...reconnectionReasons(study, bank, operated.control, judgement),
   ];
-}
-
-function watchCode(duty: Duty): string {
-  if (duty.ratio === null || duty.ratio <= 1) return 'limit.near';
-  return duty.name === 'inrush current' ? 'inrush.assumedInductance' : 'limit.exceededAlready';
-}
-
-function dutyReason(code: string, duty: Duty): Remark {
-  const values: Record<string, number | string> = { duty: duty.name, value: duty.value };
-  if (duty.limit !== null) values.limit = duty.limit;
-  if (duty.group !== null) values.group = duty.group + 1;
-  if (duty.levelKvar !== null) values.levelKvar = duty.levelKvar;
-  if (duty.orderH !== null) values.orderH = duty.orderH;
-  if (duty.corner !== null) Object.assign(values, duty.corner);
-  return remark(code, values, { unit: duty.unit, source: duty.source });
-}
-
-function supplyReasons(study: Study, { network: { shortCircuitMinMva } }: Judgement): Remark[] {
-  const loadKva = overwhelmingKva(study, shortCircuitMinMva);
-  if (loadKva === null) return [];
-  return [remark('supply.weakerThanLoad', { shortCircuitMinMva, loadKva }, { path: 'supply.faultLevelMva' })];
-}
-
-function networkReasons(study: Study, bank: Bank, judgement: Judgement): Remark[] {
-  const found: Remark[] = [];
-  const { nearPeak, distortingSharePct } = judgement;
-  if (nearPeak !== null) {
-    const { levelKvar, corner, peakOrderH, presentOrderH } = nearPeak;
-    found.push(remark('peak.near', { levelKvar, peakOrderH, presentOrderH, reachH: PEAK_REACH_H, ...corner }));
-  }
-  if (distortingSharePct !== null) {
-    found.push(remark('plain.distortingShare', { sharePct: distortingSharePct }, { unit: '%', source: 'practice' }));
-  }
-  if (judgement.networkUnknown && bank.groups.length > 0) {
-    if (study.site.loads.distorting === null) {
-      found.push(remark('network.unknownLoads', {}, { path: 'loads.distorting' }));
-    }
-    if (study.site.loads.backgroundPct === null) {
-      found.push(remark('network.unknownBackground', {}, { path: 'loads.backgroundPct' }));
-    }
-  }
-  return found;
 }
 
 function recordReasons(study: Study): Remark[] {
   const found: Remark[] = [];
+  const { recordSummary } = study;
+  if (recordSummary.grade === 'insufficient') {
+    found.push(remark('record.insufficient', recordSummary.gradeRule.values));
+  }
+  found.push(...checkAgainstSupply(recordSummary, study.site));
   const days = (study.record.endS - study.record.firstS) / 86_400;
   if (study.site.recordedBank.state === 'unknown') {
     found.push(remark('recordedBank.unknown', {}, { path: 'recordedBank.state' }));
@@ -134,16 +91,4 @@ export function overCorrectionKvar(operated: Operated): number {
  */
 export function smallestStageKvar(study: Study, bank: Bank): number {
   return bank.groups.length === 0 ? 0 : Math.min(...bank.groups.map((g) => effectiveKvar(g, study.site.nominalV)));
-}
-
-// A delay shorter than the rule's own resistor allows needs a faster one: named, and kept.
-function reconnectionReasons(study: Study, bank: Bank, operated: Operated, judgement: Judgement): Remark[] {
-  const { reconnectDelayS } = operated.control;
-  return bank.groups.flatMap((group, g) => {
-    if (group.dischargeOhm !== null) return [];
-    const naturalS = naturalReconnectDelayS([group], study.site.rules, study.site.frequencyHz);
-    if (reconnectDelayS >= naturalS * (1 - 1e-9)) return [];
-    const values = { group: g + 1, reconnectDelayS, naturalS, requiredOhm: judgement.charge[g]!.requiredOhm };
-    return [remark('reconnection.short', values, { path: 'control.reconnectDelayS', unit: 's' })];
-  });
 }

@@ -19,13 +19,10 @@ import type { ReactorTrial } from './reactor-choice.js';
 import type { Robustness } from './robustness.js';
 import type { SpareWays } from './spare-ways.js';
 
-/** The answer of `plan` and `assess`. */
-export interface Result {
-  record: RecordSummary;
-  requirement: RequirementSummary;
+/** What is said of a bank on its network, whatever the load is known from. */
+export interface BankResult {
   bank: BankSummary;
   control: Control;
-  operation: OperationSummary;
   network: NetworkSummary;
   /** the edition judged by, and the point it was judged at */
   limits: LimitsPoint;
@@ -45,11 +42,18 @@ export interface Result {
   reactorTrials: ReactorTrial[];
   /** what more stages of the largest kind need; empty for an empty bank, and until it is asked for */
   spareWays: SpareWays[];
-  /** null without a tariff */
-  money: Money | null;
   verdict: Verdict;
   reasons: Remark[];
   assumptions: Remark[];
   cautions: Remark[];
   figures: Figure[];
+}
+
+/** The answer of `plan` and `assess` from a meter's record. */
+export interface Result extends BankResult {
+  record: RecordSummary;
+  requirement: RequirementSummary;
+  operation: OperationSummary;
+  /** null without a tariff */
+  money: Money | null;
 }

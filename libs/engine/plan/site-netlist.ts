@@ -1,7 +1,7 @@
 import { closingPeak } from '../duty/closing-circuit.js';
 import { closingNetlist } from '../duty/closing-netlist.js';
+import { closingStandings } from '../duty/closing-standings.js';
 import { type Closing, closings } from '../duty/inrush.js';
-import { fundamentalOhm } from '../duty/judge-bank.js';
 import type { Corner } from '../network/corners.js';
 import { networkNetlist } from '../network/network-netlist.js';
 import { InputProblem } from '../problem.js';
@@ -57,7 +57,7 @@ export function siteNetlist(site: Site, options: Partial<ScanOptions>): SiteNetl
         ? null
         : closingNetlist(
             gravest.circuit,
-            `${site.name}: one stage of group ${gravest.group + 1} closed onto ${stagesWords(gravest.vector)}`,
+            `${site.name}: one stage of group ${gravest.group + 1} closed onto ${stagesWords(gravest)}`,
           ),
   };
 }
@@ -66,7 +66,7 @@ function gravestClosing({ site, bank, levels, model }: NetworkScene): (Closing &
   const place = {
     nominalV: site.nominalV,
     frequencyHz: site.frequencyHz,
-    supplyOhm: fundamentalOhm(model),
+    standings: closingStandings(model, site.frequencyHz),
     vectors: levels.flatMap(({ vectors }) => vectors),
   };
   let gravest: (Closing & { group: number }) | null = null;
@@ -92,7 +92,8 @@ function cornerWords({ faultLevelMva, capacitanceFactor, inductanceFactor, dampi
   return [...parts, ...(standing === undefined ? [] : [standing])].join(', ');
 }
 
-function stagesWords(vector: Int32Array): string {
+function stagesWords({ vector, standing }: Closing): string {
   const connected = Array.from(vector, (count, g) => (count > 0 ? `${count} of group ${g + 1}` : ''));
-  return connected.filter((part) => part !== '').join(', ') || 'the supply alone';
+  const bank = connected.filter((part) => part !== '').join(', ') || 'the supply alone';
+  return standing === '' ? bank : `${bank}, ${standing}`;
 }

@@ -7,6 +7,7 @@ import type { Finance, PriceBook, Tariff } from '../money/papers.js';
 import type { LoadsInput } from '../network/loads.js';
 import type { NetworkInput } from '../network/topology.js';
 import type { Control } from '../operation/control.js';
+import type { EstimateInput } from '../requirement/estimate-input.js';
 import type { SupplyInput } from '../supply/supply.js';
 
 /** Was a bank working while the record was taken. */
@@ -55,6 +56,8 @@ export interface Site {
   prices?: PriceBook;
   catalogue?: CatalogueInput;
   finance?: Finance;
+  /** bills and equipment in place of a meter's record */
+  estimate?: EstimateInput;
   /** values that were given in another form; none come from the site file itself */
   understood?: Understood[];
 }

@@ -6,7 +6,7 @@ import { type MeterAfter, meterAfter } from '../operation/meter-after.js';
 import { type OperationMonth, operationMonths, type Simulated } from '../operation/operation.js';
 import { simulate } from '../operation/simulate.js';
 import { switchedBank } from '../operation/switched-bank.js';
-import type { Remark } from '../problem.js';
+import { type Remark, remark } from '../problem.js';
 import { tanFromPowerFactor } from '../quantity/power-factor.js';
 import type { LoadRecord } from '../record/load-record.js';
 import { type RecordSummary, summarizeRecord } from '../record/record-summary.js';
@@ -58,7 +58,10 @@ export function studySite(site: Site, record: LoadRecord, zone: ZoneTable): Stud
     site: settled,
     record,
     zone,
-    assumptions,
+    assumptions: [
+      ...assumptions,
+      ...(site.estimate === undefined ? [] : [remark('estimate.recordWins', {}, { path: 'estimate' })]),
+    ],
     target,
     load,
     needKvar,

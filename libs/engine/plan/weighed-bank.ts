@@ -1,6 +1,8 @@
 import type { Bank } from '../layout/bank.js';
 import type { Recommended } from '../money/money-result.js';
 import type { Control } from '../operation/control.js';
+import type { LoadRecord } from '../record/load-record.js';
+import type { ZoneTable } from '../record/zone-table.js';
 import { type MoneyStudy, siteSwitchKind } from './money-study.js';
 import type { Site } from './site.js';
 
@@ -17,13 +19,19 @@ export interface WeighedBank {
   eligible: boolean;
 }
 
-/** What a priced outcome was chosen from. */
-export interface PricedWays {
+/** What was weighed by its money. */
+export interface WaysWeighed {
   site: Site;
   /** in the order of preference among equals */
   ways: WeighedBank[];
   /** name of the way the outcome tells of */
   chosen: Recommended;
+}
+
+/** The same with the record it was weighed on. */
+export interface PricedWays extends WaysWeighed {
+  record: LoadRecord;
+  zone: ZoneTable;
 }
 
 /**
@@ -37,7 +45,7 @@ export function onlyWay(
   site: Site,
   money: MoneyStudy | null,
   built: { bank: Bank; control: Control } | null,
-): PricedWays | undefined {
+): WaysWeighed | undefined {
   if (money === null || built === null || built.bank.groups.length === 0) return undefined;
   const way: WeighedBank = {
     name: 'new bank',

@@ -2,6 +2,7 @@ import type { Remark } from '../problem.js';
 import { Total } from '../quantity/compensated-sum.js';
 import { energyPowerFactor } from '../quantity/power-factor.js';
 import type { LoadRecord } from './load-record.js';
+import { gradeRecord, type RecordGrade } from './record-grade.js';
 
 /** Statistics of the meter's own record. */
 export interface RecordSummary {
@@ -19,6 +20,8 @@ export interface RecordSummary {
   powerFactorNet: number | null;
   maxKw: number;
   maxKva: number;
+  grade: RecordGrade;
+  gradeRule: Remark;
   notes: Remark[];
 }
 
@@ -26,7 +29,7 @@ export interface RecordSummary {
  * Totals and maxima of the record as metered. Imported energy only: E_p = Σ max(P, 0)·h;
  * net reactive energy for `powerFactorNet` is lagging − leading.
  * @param record the meter's record
- * @returns energies [kWh, kvarh], factors, greatest mean power [kW, kVA]
+ * @returns energies [kWh, kvarh], factors, greatest mean power [kW, kVA], grade
  * @source method-energy
  */
 export function summarizeRecord(record: LoadRecord): RecordSummary {
@@ -64,6 +67,7 @@ export function summarizeRecord(record: LoadRecord): RecordSummary {
     powerFactorNet: energyPowerFactor(activeKwh, laggingKvarh - leadingKvarh),
     maxKw,
     maxKva: Math.sqrt(maxKvaSquared),
+    ...gradeRecord(record),
     notes: [...record.notes],
   };
 }

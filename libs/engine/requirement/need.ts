@@ -1,6 +1,6 @@
 import { tanFromPowerFactor } from '../quantity/power-factor.js';
-import { primaryFromBus, type TransformerPassage } from '../supply/transformer-passage.js';
-import { type BusLoad, cannotCarry } from './bus-load.js';
+import { type Power, primaryFromBus, type TransformerPassage } from '../supply/transformer-passage.js';
+import { type BusLoad, cannotCarry, type Metering } from './bus-load.js';
 
 /** What the target asks for. */
 export interface Target {
@@ -30,21 +30,35 @@ export function targetKw(activeKw: number, onExport: Target['onExport']): number
  * @source method-requirement
  */
 export function needColumn(load: BusLoad, target: Target, beginS: Float64Array): Float64Array {
-  const tan = tanFromPowerFactor(target.powerFactor);
+  const slope = { tan: tanFromPowerFactor(target.powerFactor), onExport: target.onExport };
   const n = load.activeKw.length;
   const needKvar = new Float64Array(n);
   for (let i = 0; i < n; i++) {
     const p = load.activeKw[i]!;
     const q = load.reactiveKvar[i]!;
-    if (load.metering.at === 'bus') {
-      needKvar[i] = Math.max(0, q - targetKw(p, target.onExport) * tan);
-      continue;
-    }
-    const need = primaryNeedKvar(load.metering.passage, p, q, { tan, onExport: target.onExport });
+    const need = slopeNeedKvar(load.metering, p, q, slope);
     if (need === null) throw cannotCarry(beginS[i]!, p, q);
     needKvar[i] = need;
   }
   return needKvar;
+}
+
+/**
+ * kvar needed at the bus for one load, the same rule as an interval's.
+ * @param metering where the target holds
+ * @param load power at the bus
+ * @param target power factor and how export counts
+ * @returns need [kvar], ≥ 0; null where the transformers can't carry the load
+ * @source method-requirement
+ */
+export function loadNeedKvar(metering: Metering, load: Power, target: Target): number | null {
+  const slope = { tan: tanFromPowerFactor(target.powerFactor), onExport: target.onExport };
+  return slopeNeedKvar(metering, load.activeKw, load.reactiveKvar, slope);
+}
+
+function slopeNeedKvar(metering: Metering, p: number, q: number, slope: TargetSlope): number | null {
+  if (metering.at === 'bus') return Math.max(0, q - targetKw(p, slope.onExport) * slope.tan);
+  return primaryNeedKvar(metering.passage, p, q, slope);
 }
 
 interface TargetSlope {

@@ -1,4 +1,5 @@
 import { InputProblem } from '../problem.js';
+import { resistanceGrowth } from '../quantity/resistance-growth.js';
 import type { SettledTransformer, Supply } from './supply.js';
 
 /** Series resistance and reactance per phase at the fundamental, at the bus voltage [Ω]. */
@@ -88,7 +89,7 @@ export function supplyPath(supply: Supply, nominalV: number, faultLevelMva: numb
  * @source method-network
  */
 export function pathImpedanceInto(path: SupplyPath, orderH: number, out: Float64Array): void {
-  const growth = orderH ** path.resistanceExponent;
+  const growth = resistanceGrowth(orderH, path.resistanceExponent);
   let re = path.source.rOhm * growth;
   let im = path.source.xOhm * orderH;
   if (path.transformers.length > 0) {

@@ -1,12 +1,17 @@
 import type { MeterMap } from '#libs/contract/meter-map.js';
 import { InputProblem } from '#libs/engine/index.js';
-import { type ColumnChoice, columnChoices, columnNamed } from './column-choice.js';
+import { columnsNamed } from './column-candidates.js';
+import { type ColumnChoice, columnChoices } from './column-choice.js';
 import type { CsvView } from './csv-view.js';
+import { type DayLayout, dayLayout } from './day-layout.js';
+import { daySlots } from './day-slots.js';
 import { type HeaderColumn, readHeaderColumn } from './header-column.js';
 import { headerWindows } from './header-windows.js';
 import { readNumberText } from './number-cell.js';
 import { RowCells } from './row-cells.js';
-import { chooseTimeColumns, isDated, type TimeColumns, timeContent } from './time-columns.js';
+import { type SideColumns, sideColumns } from './side-columns.js';
+import { statedRatios } from './transformer-ratio.js';
+import { chooseTimeColumns, isDated, isSerial, type TimeColumns } from './time-columns.js';
 import { readUnit } from './unit-text.js';
 
 /** How the rows of a delimited file are to be read. */
@@ -22,6 +27,11 @@ export interface CsvLayout {
   time: TimeColumns;
   choices: ColumnChoice[];
   header: readonly HeaderColumn[];
+  /** transformer ratios stated above the data, in the names or in a column of their own */
+  ratios: readonly number[];
+  side: SideColumns;
+  /** columns of the hours of a day in a file of one row a day */
+  days: DayLayout | null;
 }
 
 interface Row {
@@ -112,18 +122,20 @@ function rowsOf(view: CsvView, separator: string, most: number): Row[] {
 
 function candidatesAt(rows: Row[], separator: string, map: MeterMap): Candidate[] {
   const delimiter = separator.charCodeAt(0);
-  if (map.headerRow === 0) return headless(rows, delimiter);
+  if (map.headerRow === 0) return headless(rows, delimiter, map);
   const found: Candidate[] = [];
   for (const [index, row] of rows.entries()) {
-    if (map.headerRow === undefined ? !mayName(row) : row.number !== map.headerRow) continue;
+    if (map.headerRow === undefined ? !mayName(row) && !namesDay(row) : row.number !== map.headerRow) continue;
     found.push(...candidateAt(rows, index, delimiter, map));
     if ((found.at(-1)?.score ?? 0) >= 2 * FOLLOWED) break;
   }
   return found;
 }
 
-function headless(rows: Row[], delimiter: number): Candidate[] {
-  const row = rows.find(({ cells }) => cells.some((cell) => isDated(cell) !== null));
+function headless(rows: Row[], delimiter: number, { columns }: MeterMap): Candidate[] {
+  const time = columns?.time ?? columns?.date;
+  const isTime = (cell: string, column: number) => isDated(cell) !== null || (column + 1 === time && isSerial(cell));
+  const row = rows.find(({ cells }) => cells.some(isTime));
   if (row === undefined) return [];
   const header = row.cells.map((_, index) => readHeaderColumn('', index));
   const number = row.number - 1;
@@ -148,6 +160,11 @@ function mayName({ cells }: Row): boolean {
   );
 }
 
+/** Hours may be numbered. */
+function namesDay({ cells }: Row): boolean {
+  return cells.length >= 24 && !cells.some((cell) => isDated(cell)) && daySlots(cells, undefined) !== null;
+}
+
 function candidateAt(rows: Row[], index: number, delimiter: number, map: MeterMap): Candidate[] {
   const row = rows[index]!;
   const under = rows[index + 1];
@@ -156,13 +173,17 @@ function candidateAt(rows: Row[], index: number, delimiter: number, map: MeterMa
   const header = names.map(readHeaderColumn);
   const roles = header.filter(({ role }) => role !== null);
   const said = map.headerRow !== undefined || map.columns !== undefined;
-  if (!said && (roles.length < 2 || roles.every(({ role }) => role === 'time'))) return [];
+  if (!said && !namesDay(row) && (roles.length < 2 || roles.every(({ role }) => role === 'time'))) return [];
   const lastHeaderRow = row.number + (hasUnits ? 1 : 0);
   const data = dataBehind(rows, index + (hasUnits ? 2 : 1));
-  const followed = data[0]?.cells.some((cell) => timeContent([cell]) !== null && isDated(cell) !== null) === true;
+  const followed = data[0]?.cells.some((cell, column) => isDatedCell(cell, header[column])) === true;
   const asWide = followed && data[0]!.cells.length === header.length;
   const score = roles.length + (followed ? FOLLOWED : 0) + (asWide ? FOLLOWED : 0);
   return [{ delimiter, row, lastHeaderRow, header, before: rows.slice(0, index), data, score }];
+}
+
+function isDatedCell(cell: string, column: HeaderColumn | undefined): boolean {
+  return isDated(cell) !== null || (column?.role === 'time' && isSerial(cell));
 }
 
 /** The first rows from an index on that hold anything. */
@@ -193,7 +214,11 @@ function layoutOf(found: Candidate, map: MeterMap): CsvLayout {
   const { delimiter, row, lastHeaderRow, header } = found;
   const names = header.map(({ name }) => name);
   const sample = found.data.map(({ cells }) => cells);
-  const time = mappedTime(header, map) ?? chooseTimeColumns(header, sample);
+  const ratios = statedRatios([...found.before.map(({ cells }) => cells.join(' ')), ...ratioColumns(names, sample)]);
+  const file = { delimiter, names, headerRow: row.number, lastHeaderRow, header, ratios };
+  const day = dayLayout(found, sample, map);
+  if (day !== null) return { ...file, ...day, choices: [], side: { meter: [], quality: [], unread: [] } };
+  const time = mappedTime(header, map, sample) ?? chooseTimeColumns(header, sample);
   if (time === null && sample.length === 0) {
     throw new InputProblem([{ code: 'empty-file', expected: 'rows of data under the header', found: 'none' }]);
   }
@@ -207,7 +232,13 @@ function layoutOf(found: Candidate, map: MeterMap): CsvLayout {
   const choices = columnChoices(header, map, row.number);
   refuseDataBefore(found, time, choices);
   const mark = map.stamp ?? time.mark;
-  return { delimiter, names, headerRow: row.number, lastHeaderRow, time: { ...time, mark }, choices, header };
+  const side = sideColumns(header, sample, choices, map);
+  return { ...file, time: { ...time, mark }, choices, side, days: null };
+}
+
+/** Names with the first cell behind each: a column may repeat the ratio in every row. */
+function ratioColumns(names: readonly string[], sample: readonly string[][]): string[] {
+  return names.map((name, index) => `${name} ${sample[0]?.[index] ?? ''}`);
 }
 
 /** Rows of data above the header would be lost as if they were a preamble. */
@@ -223,18 +254,19 @@ function refuseDataBefore({ before, header }: Candidate, time: TimeColumns, choi
   throw new InputProblem([{ code: 'unreadable', row: data.number, expected, found: 'data' }]);
 }
 
-function mappedTime(header: readonly HeaderColumn[], map: MeterMap): TimeColumns | null {
+function mappedTime(header: readonly HeaderColumn[], map: MeterMap, sample: readonly string[][]): TimeColumns | null {
   const { time, date, clock } = map.columns ?? {};
   const stamp = time ?? date;
   if (stamp === undefined) return null;
-  const at = columnNamed(header, stamp, time === undefined ? 'columns.date' : 'columns.time');
-  const beside = clock === undefined ? null : columnNamed(header, clock, 'columns.clock');
+  const [at] = columnsNamed(header, stamp, time === undefined ? 'columns.date' : 'columns.time');
+  const beside = clock === undefined ? undefined : columnsNamed(header, clock, 'columns.clock')[0];
   return {
-    stamp: at.index,
+    stamp: at!.index,
     clock: beside?.index ?? -1,
     end: -1,
-    mark: beside?.mark ?? at.mark,
-    zone: beside?.zone ?? at.zone,
+    mark: beside?.mark ?? at!.mark,
+    zone: beside?.zone ?? at!.zone,
+    serial: sample.some((cells) => isSerial(cells[at!.index] ?? '')),
   };
 }
 

@@ -38,6 +38,21 @@ describe('a column name', () => {
     ['Kondensatorbatterie kvar', 'connected'],
     ['Standby (0/1)', 'standby'],
     ['stand-by', 'standby'],
+    ['Lagging_Current_Power_Factor', 'powerFactor'],
+    ['cos φ', 'powerFactor'],
+    ['Facteur de puissance', 'powerFactor'],
+    ['Apparent power (kVA)', 'apparent'],
+    ['Scheinleistung', 'apparent'],
+    ['Current L1 (A)', 'current'],
+    ['Cumulative energy (kWh)', 'active'],
+    ['Meter ID', 'meter'],
+    ['Zählernummer', 'meter'],
+    ['NMI', 'meter'],
+    ['Meter reading (kWh)', 'active'],
+    ['Quality', 'quality'],
+    ['Messwertstatus', 'quality'],
+    // what stands in the column decides
+    ['WeekStatus', 'quality'],
     ['date', 'time'],
     ['Zeitstempel', 'time'],
     ['Horodatage', 'time'],
@@ -46,26 +61,12 @@ describe('a column name', () => {
     expect(roleOf(name)).toBe(role);
   });
 
-  it.each([
-    'Lagging_Current_Power_Factor',
-    'Leading_Current_Power_Factor',
-    'NSM',
-    'WeekStatus',
-    'Day_of_week',
-    'Load_Type',
-    'CO2(tCO2)',
-    'cos φ',
-    'Apparent power (kVA)',
-    'Current L1 (A)',
-    'THD (%)',
-    'Cumulative energy (kWh)',
-    'Tariff',
-    'Temperature',
-    'Quality',
-    '',
-  ])('"%s" is of no use', (name) => {
-    expect(roleOf(name)).toBeNull();
-  });
+  it.each(['NSM', 'Day_of_week', 'Load_Type', 'CO2(tCO2)', 'Load factor', 'THD (%)', 'Tariff', 'Temperature', ''])(
+    '"%s" is of no use',
+    (name) => {
+      expect(roleOf(name)).toBeNull();
+    },
+  );
 
   it('keeps the site’s own kvar apart from the bank’s', () => {
     expect(roleOf('Reactive power after compensation (kvar)')).toBe('reactive');
@@ -103,6 +104,28 @@ describe('a column name', () => {
     expect(['Active energy (import)', 'kWh (total)', 'Active power', 'Time (UTC)'].map(isForeign)).toEqual(
       Array(4).fill(false),
     );
+  });
+
+  it('says the phase, and what a voltage is measured between', () => {
+    const phaseOf = (name: string) => readHeaderColumn(name, 0).phase;
+    expect(['kW L1', 'P_L2 [kW]', 'phase C kvar', 'Phase S (kW)', 'kW', 'Leistung 1 kW'].map(phaseOf)).toEqual([
+      1, 2, 3, 2, 0, 0,
+    ]);
+    const betweenOf = (name: string) => readHeaderColumn(name, 0).between;
+    expect(['Voltage L-L (V)', 'U12 [V]', 'Voltage L1-L2 [V]', 'Voltage line to line (V)'].map(betweenOf)).toEqual(
+      Array(4).fill('lineToLine'),
+    );
+    expect(['Voltage L-N (V)', 'Voltage L1-N (V)', 'phase to neutral voltage [V]'].map(betweenOf)).toEqual(
+      Array(3).fill('lineToNeutral'),
+    );
+    expect(['Voltage (V)', 'Voltage L1 [V]', 'U1 [V]'].map(betweenOf)).toEqual([null, null, null]);
+  });
+
+  it('says a register, and where the word may mean the interval too', () => {
+    const registerOf = (name: string) => readHeaderColumn(name, 0).register;
+    expect(
+      ['Cumulative energy (kWh)', 'Zählerstand kWh', 'kWh register', 'Meter reading (kWh)', 'kWh'].map(registerOf),
+    ).toEqual(['said', 'said', 'said', 'maybe', null]);
   });
 
   it('remarks on reactive power in kilowatt, which can only be kvar', () => {

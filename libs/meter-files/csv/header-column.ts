@@ -1,4 +1,4 @@
-import type { MeterColumn } from '#libs/contract/meter-map.js';
+import type { MeterColumn, VoltageBetween } from '#libs/contract/meter-map.js';
 import { areKnown, says, wordsOf } from './header-words.js';
 import { findUnit, type ReadUnit } from './unit-text.js';
 
@@ -18,8 +18,12 @@ export interface HeaderColumn {
   zone: string | null;
   /** a greatest or least value within the interval */
   extreme: boolean;
-  /** a single phase */
-  phase: boolean;
+  /** 1, 2 or 3 of a column of one phase, 0 of any other */
+  phase: 0 | 1 | 2 | 3;
+  /** what the name says a voltage is measured between */
+  between: VoltageBetween | null;
+  /** the name says a register that only rises; `reading` is a word that may mean the interval too */
+  register: 'said' | 'maybe' | null;
   /** reactive power whose unit is written kW or kWh */
   reactiveInWatt: boolean;
 }
@@ -37,7 +41,7 @@ export function readHeaderColumn(name: string, index: number): HeaderColumn {
   const unit = misread ? null : found.unit;
   const { rest } = found;
   const role = roleOf(words, unit);
-  const measured = role !== null && role !== 'time' && role !== 'standby';
+  const measured = role !== null && !UNMEASURED.includes(role);
   return {
     index,
     name,
@@ -47,9 +51,35 @@ export function readHeaderColumn(name: string, index: number): HeaderColumn {
     mark: role === 'time' ? markOf(words) : null,
     zone: role === 'time' ? zoneOf(name) : null,
     extreme: says(words, 'extreme'),
-    phase: says(words, 'phase') || /\b(?:phase|l)[ _-]?[123abc]\b/i.test(rest),
+    phase: phaseOf(rest),
+    between: role === 'voltage' ? betweenOf(rest) : null,
+    register: says(words, 'cumulative') ? 'said' : says(words, 'reading') ? 'maybe' : null,
     reactiveInWatt: unit?.family === 'active' && isReactiveRole(role),
   };
+}
+
+const UNMEASURED: readonly MeterColumn[] = ['time', 'standby', 'powerFactor', 'meter', 'quality'];
+
+/** L1 … L3, phase A … C and R, S, T; L1-L2 and the like lie between two phases. */
+function phaseOf(rest: string): 0 | 1 | 2 | 3 {
+  const mark = /(?<![\p{L}\d])(?:(?:phase|ph|phases?)[ _-]?([123abcrst])|l[ _-]?([123abc]))(?![\p{L}\d])/iu.exec(
+    rest.replaceAll('_', ' '),
+  );
+  if (mark === null) return 0;
+  const letter = (mark[1] ?? mark[2])!.toLowerCase();
+  return (['1ar', '2bs', '3ct'].findIndex((same) => same.includes(letter)) + 1) as 1 | 2 | 3;
+}
+
+const LINE_TO_LINE =
+  /\b(?:l\s?[-–]?\s?l|l[123]\s?[-–]?\s?l[123]|[vul]?(?:12|23|31)|v?(?:ab|bc|ca)|(?:line|phase)[ -](?:to[ -])?(?:line|phase)|verkettet|composee)\b/i;
+const LINE_TO_NEUTRAL =
+  /\b(?:l[123]?\s?[-–]?\s?n|[vu]?[123abc]n|(?:line|phase)[ -](?:to[ -])?neutral|sternspannung|strangspannung|simple)\b/i;
+
+function betweenOf(rest: string): VoltageBetween | null {
+  const plain = rest.replaceAll('_', ' ');
+  const line = LINE_TO_LINE.test(plain);
+  if (line === LINE_TO_NEUTRAL.test(plain)) return null;
+  return line ? 'lineToLine' : 'lineToNeutral';
 }
 
 /** A short bracket that holds none of the trade's words, such as [MJ] or (hp), is a unit that is not read. */
@@ -73,7 +103,8 @@ function signWords(rest: string): string[] {
 }
 
 function roleOf(words: string[], unit: ReadUnit | null): MeterColumn | null {
-  if (says(words, 'ratio') || says(words, 'distortion')) return null;
+  if (says(words, 'distortion')) return null;
+  if (says(words, 'ratio')) return unit === null && isPowerFactor(words) ? 'powerFactor' : null;
   switch (unit?.family) {
     case 'active':
       return says(words, 'reactive') ? reactiveRole(words) : activeRole(words);
@@ -81,17 +112,19 @@ function roleOf(words: string[], unit: ReadUnit | null): MeterColumn | null {
       return isBank(words) ? 'connected' : reactiveRole(words);
     case 'apparent':
       // kVAr is sometimes written kVA with the word reactive before it
-      return says(words, 'reactive') ? reactiveRole(words) : null;
+      return says(words, 'reactive') ? reactiveRole(words) : apparentRole(words);
     case 'voltage':
       return 'voltage';
     case 'current':
-      return null;
+      return 'current';
     default:
       return roleWithoutUnit(words);
   }
 }
 
 function roleWithoutUnit(words: string[]): MeterColumn | null {
+  if (isMeterName(words)) return 'meter';
+  if (says(words, 'quality')) return 'quality';
   if (says(words, 'other')) return null;
   if (says(words, 'standby')) return 'standby';
   if (says(words, 'reactive') || says(words, 'lagging') || says(words, 'leading'))
@@ -99,17 +132,33 @@ function roleWithoutUnit(words: string[]): MeterColumn | null {
   const quantity = says(words, 'active') && !says(words, 'apparent');
   if (says(words, 'time') && !quantity) return 'time';
   if (says(words, 'voltage')) return 'voltage';
-  return quantity ? activeRole(words) : null;
+  if (quantity) return activeRole(words);
+  if (says(words, 'apparentOnly')) return apparentRole(words);
+  return says(words, 'current') ? 'current' : null;
+}
+
+/** Power factor, not load or diversity factor. */
+function isPowerFactor(words: string[]): boolean {
+  return !says(words, 'other') && (says(words, 'powerFactor') || says(words, 'power'));
+}
+
+function apparentRole(words: string[]): MeterColumn | null {
+  return says(words, 'other') ? null : 'apparent';
+}
+
+function isMeterName(words: string[]): boolean {
+  if (says(words, 'meterName')) return true;
+  return says(words, 'meter') && (says(words, 'identity') || words.length === 1);
 }
 
 function activeRole(words: string[]): MeterColumn | null {
-  if (says(words, 'other') || says(words, 'cumulative')) return null;
+  if (says(words, 'other')) return null;
   if (says(words, 'apparent') && !says(words, 'active')) return null;
   return says(words, 'exported') && !says(words, 'imported') ? 'exported' : 'active';
 }
 
 function reactiveRole(words: string[]): MeterColumn | null {
-  if (says(words, 'other') || says(words, 'cumulative')) return null;
+  if (says(words, 'other')) return null;
   const lagging = says(words, 'lagging');
   const leading = says(words, 'leading');
   if (lagging !== leading) return lagging ? 'lagging' : 'leading';

@@ -19,13 +19,23 @@ export const WORDS = {
   voltage: 'voltage voltages volt volts spannung* tension tensione',
   distortion: 'thd thdu thdi harmonic harmonics oberschwingung* unbalance frequency frequenz',
   ratio: 'factor faktor leistungsfaktor facteur cos cosphi phi pf cosfi',
+  powerFactor: 'powerfactor leistungsfaktor* cos cosphi cosfi pf',
+  power: 'power puissance potencia leistung',
+  apparentOnly: 'apparent schein* aparente apparente',
+  current: 'current amps amperes strom stromstarke courant corriente intensite intensidad',
   apparent: 'apparent schein* aparente apparente s',
-  cumulative: 'cumulative cumulated cumul* kumul* zahlerstand stand register index acumulada acumulado',
+  cumulative:
+    'cumulative cumulated cumul* kumul* zahlerstand* stand register registers index acumulada acumulado lectura releve',
+  reading: 'reading readings ablesung',
   other:
     'price cost tariff limit target contract contracted price* co2 temperature status quality flag type count id ' +
     'budget forecast prognose prevision',
   extreme: 'max maximum min minimum peak spitze hochst* maxi* mini* maxima minima pointe',
-  phase: 'l1 l2 l3 phase1 phase2 phase3',
+  quality: 'quality qualitat* qualite calidad status messwertstatus flag flags validity gultigkeit estado etat',
+  meter: 'meter meters zahler compteur contador device messstelle',
+  meterName:
+    'mpan mprn nmi pod prm ean cups meterid meterno meternumber zahlpunkt* zahlernummer zahlernr messlokation* messpunkt*',
+  identity: 'id no nr number nummer numero serial name code identifier kennung bezeichnung point',
   time:
     'date datum fecha time zeit* uhrzeit heure hora clock timestamp timestamps datetime stamp horodat* interval ' +
     'period periode periodo begin beginning start end ending from to von bis ab beginn ende intervallbeginn intervallanfang intervallende debut fin inicio desde hasta',

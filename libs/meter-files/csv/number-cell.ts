@@ -18,6 +18,8 @@ const PLUS = 0x2b;
 const DOT = 0x2e;
 const COMMA = 0x2c;
 const SPACE = 0x20;
+/** More than any double needs to be written out in full. */
+const LONGEST_NUMBER = 1100;
 /** Up to 15 digits are exact in a double, and so is a power of ten up to 22: one division rounds once, correctly. */
 const EXACT_DIGITS = 15;
 export const TENTHS: Float64Array = Float64Array.from({ length: 23 }, (_, power) => 10 ** power);
@@ -33,6 +35,11 @@ export const TENTHS: Float64Array = Float64Array.from({ length: 23 }, (_, power)
 export function readNumberInto(bytes: Uint8Array, from: number, to: number, cell: NumberCell): void {
   let at = from;
   let end = to;
+  if (to - from > LONGEST_NUMBER) {
+    cell.form = 'wrong';
+    cell.value = Number.NaN;
+    return;
+  }
   while (at < end && bytes[at] === SPACE) at++;
   while (end > at && bytes[end - 1] === SPACE) end--;
   const negative = bytes[at] === MINUS;
@@ -85,6 +92,10 @@ const EXPONENT = /^(?:\d+(?:[.,]\d*)?|[.,]\d+)e[+-]?\d{1,6}$/i;
 export function readNumberText(text: string, cell: NumberCell): void {
   const bare = text.trim();
   cell.value = Number.NaN;
+  if (bare.length > LONGEST_NUMBER) {
+    cell.form = 'wrong';
+    return;
+  }
   if (MISSING.has(bare.toLowerCase())) {
     cell.form = 'missing';
     return;

@@ -117,10 +117,31 @@ describe('delimited text', () => {
     expect(problem.problems).toMatchObject([{ code: 'out-of-range', row: 3, column: 3 }]);
   });
 
-  it('refuses the rising reading of a register where energies of intervals belong', async () => {
-    const problem = await refusalOf(lines('time,kWh,kvarh', ...rows(300, (i) => `${100_000 + 3 * i},1`)));
-    expect(problem.problems).toMatchObject([{ code: 'not-supported-yet', column: 2 }]);
+  it('takes a column of energy that only rises, in steps far smaller than itself, for a register', async () => {
+    const file = (energies: (i: number) => string) => lines('time,kWh,kvarh', ...rows(300, energies));
+    expect(await kw(file((i) => `${100_000 + 3 * i},${7000 + i}`))).toEqual(Array(299).fill(12));
     expect(await kw(lines('time,kW,kvar', ...rows(300, (i) => `${100_000 + 3 * i},1`)))).toHaveLength(300);
+    // backwards too, and with the small sums that binary fractions leave
+    const backwards = rows(300, (i) => `${(5000 + i / 10).toFixed(1)},${(7000 + i / 5).toFixed(1)}`).toReversed();
+    expect(await kw(lines('time,kWh,kvarh', ...backwards))).toEqual(Array(299).fill(0.4));
+  });
+
+  it('asks about a column of energy that rises from nothing, and about one beside a register that stands still', async () => {
+    const rising = lines('time,kWh,kvarh', ...rows(300, (i) => `${3 * i},${i % 5}`));
+    const { questions } = await questionOf(rising);
+    expect(questions.map(({ id, readings }) => [id, readings.map(({ maxKw }) => maxKw)])).toEqual([
+      ['energy', [3 * 299 * 4, 12]],
+    ]);
+    const still = lines('time,kWh,kvarh', ...rows(300, (i) => `${100_000 + 3 * i},40`));
+    expect((await questionOf(still)).questions.map(({ id }) => id)).toEqual(['energy']);
+    const { record } = await readMeterText(still, { map: { energy: 'register' } });
+    expect([record.activeKw[0], record.laggingKvar[0]]).toEqual([12, 0]);
+  });
+
+  it('refuses a column that is called a register and falls like none', async () => {
+    const problem = await refusalOf(lines('time,kWh register,kvarh', ...rows(300, (i) => `${i % 7},${i % 5}`)));
+    expect(problem.problems).toMatchObject([{ code: 'inconsistent', column: 2 }]);
+    expect(await kw(lines('time,kWh reading,kvarh', ...rows(300, (i) => `${i % 7},${i % 5}`)))).toHaveLength(300);
   });
 
   it('asks which of two reactive columns counts, and takes the map’s word', async () => {

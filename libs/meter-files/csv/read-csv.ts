@@ -1,14 +1,19 @@
+import { Question } from '#libs/contract/question.js';
 import { InputProblem, type Remark } from '#libs/engine/index.js';
 import type { MeterBytes } from '../meter-bytes.js';
 import type { MeterReading, ReadOptions } from '../meter-format.js';
 import { note } from '../note.js';
 import { closeReading } from '../record/close-reading.js';
+import { shownReading } from '../record/reading-shown.js';
 import { type CsvLayout, findLayout, looksTabular } from './csv-layout.js';
+import type { CsvFile } from './csv-meaning.js';
+import { DayRows } from './day-rows.js';
+import { MeterRows } from './meter-rows.js';
 import { QuickRows } from './quick-rows.js';
 import { LONGEST_ROW_BYTES, RowBuffer } from './row-buffer.js';
 import { RowCells } from './row-cells.js';
-import { RowReader } from './row-reader.js';
-import { settleMeaning } from './settle-meaning.js';
+import type { RowReader } from './row-reader.js';
+import { firstReading, settleMeaning } from './settle-meaning.js';
 
 /** A header is looked for in so much of the file at once; what lies before it is dropped [bytes]. */
 const VIEW_BYTES = 262_144;
@@ -25,15 +30,60 @@ export async function readCsv(source: MeterBytes, options: ReadOptions, lane: La
   const map = options.map ?? {};
   const buffer = new RowBuffer(source);
   const layout = await layoutOf(buffer, options);
-  const reader = new RowReader(layout, map);
-  await readRows(buffer, layout, { reader, lane, sizeBytes: options.sizeBytes ?? 0 });
-  reader.stamps.end();
-  reader.problems.refuse();
-  if (reader.rows.count === 0) {
-    throw new InputProblem([{ code: 'empty-file', expected: 'rows of data under the header', found: 'none' }]);
-  }
-  const result = settleMeaning({ layout, reader, map, options });
-  return closeReading({ ...result, notes: [...fileNotes(source, layout, reader), ...result.notes] }, map);
+  const file = { layout, map, options };
+  const read = layout.days === null ? await meterRead(buffer, file, lane) : await daysRead(buffer, file);
+  const result = settleMeaning(read.file);
+  return closeReading({ ...result, notes: [...fileNotes(source, read.file), ...read.notes, ...result.notes] }, map);
+}
+
+interface Read {
+  file: CsvFile;
+  notes: Remark[];
+}
+
+/** Rows of intervals, of one meter or of several. */
+async function meterRead(buffer: RowBuffer, file: Omit<CsvFile, 'reader'>, lane: Lane): Promise<Read> {
+  const { layout, map } = file;
+  const rows = new MeterRows(layout, map);
+  await readRows(buffer, layout, rows, {
+    quickReader: lane === 'general' ? null : rows.first,
+    sizeBytes: file.options.sizeBytes ?? 0,
+  });
+  const { readers, meters } = rows.close();
+  const [reader] = readers.values();
+  if (reader === undefined || reader.rows.count === 0) refuseEmpty();
+  if (readers.size > 1) askWhichMeter(file, readers, meters);
+  const notes = map.meter === undefined ? [] : [note('meter-chosen', { meter: map.meter, others: meters - 1 })];
+  return { file: { ...file, reader }, notes };
+}
+
+/** A row a day; the rows themselves say what they hold. */
+async function daysRead(buffer: RowBuffer, { layout, map, options }: Omit<CsvFile, 'reader'>): Promise<Read> {
+  const days = layout.days!;
+  const reader = new DayRows(layout, days, map);
+  await readRows(buffer, layout, reader, { quickReader: null, sizeBytes: 0 });
+  const notes = [
+    note('days-in-columns', { columns: days.slots.length }),
+    ...(days.mark === null ? [note('stamps-assumed-beginnings', {})] : []),
+  ];
+  const settled = reader.layoutOf(map);
+  if (reader.rows.count === 0) refuseEmpty();
+  return { file: { layout: settled, reader, map, options }, notes };
+}
+
+function refuseEmpty(): never {
+  throw new InputProblem([{ code: 'empty-file', expected: 'rows of data under the header', found: 'none' }]);
+}
+
+/** A reading for each meter; a meter that can't be read as the file stands has none. */
+function askWhichMeter(file: Omit<CsvFile, 'reader'>, readers: Map<string, RowReader>, meters: number): never {
+  const found = [...readers].map(([meter, reader]) => ({ meter, result: firstReading({ ...file, reader }) }));
+  const readings = found.flatMap(({ meter, result }) =>
+    result instanceof InputProblem ? [] : [shownReading({ meter }, result.columns)],
+  );
+  const [failed] = found.flatMap(({ result }) => (result instanceof InputProblem ? [result] : []));
+  if (readings.length === 0) throw failed!;
+  throw new Question([{ id: 'meter', about: `which of the ${meters} meters in the file is read`, readings }]);
 }
 
 async function layoutOf(buffer: RowBuffer, { map = {} }: ReadOptions): Promise<CsvLayout> {
@@ -77,17 +127,24 @@ function dropRows(buffer: RowBuffer): void {
 /** Which lane the rows go through: the quick one as far as it goes, or the general one alone. */
 export type Lane = 'quick' | 'general';
 
+interface RowTaker {
+  take(cells: RowCells, rowNumber: number): void;
+}
+
+/** Reads every row; those of the usual shape by the quick lane where there is a reader for it. */
 async function readRows(
   buffer: RowBuffer,
   layout: CsvLayout,
-  { reader, lane, sizeBytes }: { reader: RowReader; lane: Lane; sizeBytes: number },
+  taker: RowTaker,
+  { quickReader, sizeBytes }: { quickReader: RowReader | null; sizeBytes: number },
 ): Promise<void> {
-  const plan = lane === 'general' ? null : reader.quickPlan();
-  const quick = plan === null ? null : new QuickRows(reader.rows, plan);
-  const cells = new RowCells();
+  const plan = quickReader?.quickPlan() ?? null;
+  const quick = plan === null || quickReader === null ? null : new QuickRows(quickReader.rows, plan);
+  const lanes = { taker, quickReader, quick, cells: new RowCells() };
   do {
-    takeRows(buffer, layout, { reader, quick, cells });
-    reader.rows.likelyRows = likelyRows(reader.rows.count, buffer.takenBytes, sizeBytes);
+    takeRows(buffer, layout, lanes);
+    const rows = quickReader?.rows;
+    if (rows !== undefined) rows.likelyRows = likelyRows(rows.count, buffer.takenBytes, sizeBytes);
     if (buffer.end - buffer.start > LONGEST_ROW_BYTES) buffer.refuseEndlessRow();
   } while (await buffer.more());
   if (buffer.end > buffer.start) refuseOpenQuote(buffer.rowsBefore + 1);
@@ -98,23 +155,26 @@ function likelyRows(rows: number, takenBytes: number, sizeBytes: number): number
   return takenBytes > 0 ? Math.ceil((rows / takenBytes) * sizeBytes * 1.03) : 0;
 }
 
+interface Lanes {
+  taker: RowTaker;
+  quickReader: RowReader | null;
+  quick: QuickRows | null;
+  cells: RowCells;
+}
+
 /** Takes every whole row of the buffer: as far as it goes by the quick lane, the row that stops it by the general one. */
-function takeRows(
-  buffer: RowBuffer,
-  layout: CsvLayout,
-  { reader, quick, cells }: { reader: RowReader; quick: QuickRows | null; cells: RowCells },
-): void {
+function takeRows(buffer: RowBuffer, layout: CsvLayout, { taker, quickReader, quick, cells }: Lanes): void {
   const marks = { delimiter: layout.delimiter, rowEnd: buffer.rowEnd };
   for (;;) {
-    quick?.takeFrom(buffer, reader.mark.sign);
+    quick?.takeFrom(buffer, quickReader!.mark.sign);
     const next = cells.split(buffer.bytes, buffer.start, buffer.end, marks);
     if (next < 0) return;
     buffer.start = next;
     buffer.rowsBefore++;
     if (buffer.rowsBefore <= layout.lastHeaderRow) continue;
-    const before = reader.rows.count;
-    reader.take(cells, buffer.rowsBefore);
-    if (reader.rows.count > before) quick?.learn(cells);
+    const before = quickReader?.rows.count ?? 0;
+    taker.take(cells, buffer.rowsBefore);
+    if (quick !== null && quickReader!.rows.count > before) quick.learn(cells);
   }
 }
 
@@ -123,11 +183,27 @@ function refuseOpenQuote(row: number): never {
   throw new InputProblem([{ code: 'unreadable', row, expected, found: 'the end of the file' }]);
 }
 
-function fileNotes(source: MeterBytes, layout: CsvLayout, { headers, totals }: RowReader): Remark[] {
+function fileNotes(source: MeterBytes, { layout, reader }: CsvFile): Remark[] {
+  const { headers, totals } = reader;
+  const encoding = source.encoding === 'utf-8' && !isUtf8(source.head) ? 'windows-1252' : source.encoding;
   return [
-    ...(source.encoding === 'utf-8' ? [] : [note('encoding-converted', { encoding: source.encoding })]),
+    ...(encoding === 'utf-8' ? [] : [note('encoding-converted', { encoding })]),
     ...(layout.headerRow > 1 ? [note('rows-before-header', { rows: layout.headerRow - 1 })] : []),
     ...(headers.count > 0 ? [note('header-repeated', { rows: headers.count })] : []),
+    ...(layout.side.unread.length > 0
+      ? [note('quality-not-read', { columns: layout.side.unread.map((column) => layout.names[column]).join(', ') })]
+      : []),
+    ...(layout.time.serial ? [note('serial-dates', {})] : []),
     ...(totals.count > 0 ? [note('total-rows-left-out', { rows: totals.count })] : []),
   ];
+}
+
+/** Eight-bit codes are told by bytes that are no UTF-8; the head may end within a letter. */
+function isUtf8(head: Uint8Array): boolean {
+  try {
+    new TextDecoder('utf-8', { fatal: true }).decode(head, { stream: true });
+    return true;
+  } catch {
+    return false;
+  }
 }

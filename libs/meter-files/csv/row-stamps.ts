@@ -1,6 +1,7 @@
 import { dayNumber } from '#libs/engine/index.js';
 import { mixedIntervals } from '../record/mixed-intervals.js';
 import type { RowProblems } from '../row-problems.js';
+import { readDayFraction, readSerialStamp } from '../time/serial-dates.js';
 import { datePartsOf, readStamp, type Stamp } from '../time/stamp-text.js';
 import type { StampedRows } from '../time/stamped-rows.js';
 import type { RowCells } from './row-cells.js';
@@ -32,11 +33,11 @@ export class RowStamps {
    */
   read(cells: RowCells): Stamp | null {
     const { stamp: column, clock } = this.#time;
-    const stamp = readStamp(cells.text(column));
+    const stamp = this.#stampOf(cells.text(column));
     if (clock < 0) {
       return stamp === null || stamp.dateKey === null ? null : stamp;
     }
-    const beside = readStamp(cells.text(clock));
+    const beside = this.#clockOf(cells.text(clock));
     if (stamp === null || stamp.dateKey === null || beside === null || beside.clockS === null) return null;
     return { ...beside, dateKey: stamp.dateKey, dateForm: stamp.dateForm };
   }
@@ -68,6 +69,17 @@ export class RowStamps {
     const expected = 'a date and a time, as in other rows of midnight';
     const place = { row: this.#firstDateRow, column: this.#time.stamp + 1 };
     this.#problems.add({ code: 'bad-time', ...place, expected, found: 'a date alone' });
+  }
+
+  #stampOf(text: string): Stamp | null {
+    return (this.#time.serial ? readSerialStamp(text) : null) ?? readStamp(text);
+  }
+
+  #clockOf(text: string): Stamp | null {
+    const clockS = this.#time.serial ? readDayFraction(text) : null;
+    return clockS === null
+      ? readStamp(text)
+      : { dateKey: null, dateForm: 'yearFirst', clockS, offsetS: null, untilS: null };
   }
 
   #refuse(row: number, expected: string, cells: RowCells): void {
@@ -108,7 +120,7 @@ export class RowStamps {
     if (stamp.untilS !== null) return modulo(stamp.untilS - (stamp.clockS ?? 0), DAY_S) || DAY_S;
     const { end } = this.#time;
     if (end < 0) return null;
-    const until = readStamp(cells.text(end));
+    const until = this.#stampOf(cells.text(end)) ?? this.#clockOf(cells.text(end));
     if (until === null || (until.clockS === null && until.dateKey === null)) return null;
     const clockS = (until.clockS ?? 0) - (stamp.clockS ?? 0) - ((until.offsetS ?? 0) - (stamp.offsetS ?? 0));
     if (until.dateKey !== null && until.dateForm === 'yearFirst' && stamp.dateForm === 'yearFirst') {

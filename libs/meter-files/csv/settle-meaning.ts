@@ -1,4 +1,4 @@
-import type { MeterMap } from '#libs/contract/meter-map.js';
+import { type MeterMap, POWER_FACTOR_SIGNS, type PowerFactorSign } from '#libs/contract/meter-map.js';
 import { Question, type QuestionAsked, type QuestionReading } from '#libs/contract/question.js';
 import { InputProblem, type Remark } from '#libs/engine/index.js';
 import { note } from '../note.js';
@@ -6,18 +6,13 @@ import type { ReadResult } from '../record/close-reading.js';
 import { ConflictingRows } from '../record/interval-grid.js';
 import { sameColumns, shownReading } from '../record/reading-shown.js';
 import { dateOrders } from '../time/date-orders.js';
-import type { DateOrder } from '../time/stamp-text.js';
-import type { ColumnChoice } from './column-choice.js';
-import { type CsvFile, type CsvMeaning, readUnder } from './csv-reading.js';
-import type { DecimalSign } from './decimal-mark.js';
+import type { CsvFile, CsvMeaning } from './csv-meaning.js';
+import { readUnder } from './csv-reading.js';
+import { energyColumns, movesOf } from './energy-registers.js';
+import { hasNegative } from './power-factor.js';
 
-/** What a file leaves open, each with every answer there is. */
-interface OpenPoints {
-  choice: ColumnChoice[];
-  decimal: (DecimalSign | null)[];
-  order: DateOrder[];
-  keep: ('first' | 'last' | undefined)[];
-}
+/** What a file leaves open, with every answer there is. */
+type OpenPoints = { [Point in keyof CsvMeaning]: CsvMeaning[Point][] };
 
 type Point = keyof OpenPoints;
 
@@ -43,6 +38,33 @@ export function settleMeaning(file: CsvFile): ReadResult {
   }
 }
 
+/**
+ * The first reading that a file can have, whatever else it can mean; for showing it beside others.
+ * @param file what was read
+ * @returns the record's columns, or why there are none
+ */
+export function firstReading(file: CsvFile): ReadResult | InputProblem {
+  try {
+    return firstAmong(file, openPoints(file));
+  } catch (problem) {
+    if (problem instanceof InputProblem) return problem;
+    throw problem;
+  }
+}
+
+function firstAmong(file: CsvFile, points: OpenPoints): ReadResult {
+  let failure: unknown;
+  for (const meaning of meanings({ ...points, keep: file.map.keepRow === undefined ? ['first'] : points.keep })) {
+    try {
+      return readUnder(file, meaning);
+    } catch (problem) {
+      if (!(problem instanceof InputProblem)) throw problem;
+      failure ??= problem;
+    }
+  }
+  throw failure;
+}
+
 /** Rows that disagree are asked about, with the row that raises it, or refused where either answer gives one record. */
 function askWhichCounts(file: CsvFile, points: OpenPoints, problem: ConflictingRows): never {
   try {
@@ -53,15 +75,46 @@ function askWhichCounts(file: CsvFile, points: OpenPoints, problem: ConflictingR
   throw problem;
 }
 
-function openPoints({ layout, reader, map }: CsvFile): OpenPoints {
+function openPoints(file: CsvFile): OpenPoints {
+  const { layout, reader, map } = file;
   const { mark } = reader;
   const open = mark.openDots.length + mark.openCommas.length > 0;
+  const decimal = mark.sign === null && open ? (['.', ','] as const) : [mark.sign];
+  const order = dateOrders(reader.rows, map.dateOrder);
   return {
     choice: layout.choices,
-    decimal: mark.sign === null && open ? ['.', ','] : [mark.sign],
-    order: dateOrders(reader.rows, map.dateOrder),
+    decimal: [...decimal],
+    order,
     keep: [map.keepRow],
+    energy: energyMeanings(file),
+    powerFactorSign: factorSigns(file),
+    multiplier: map.multiplier === undefined ? [1, ...layout.ratios] : [map.multiplier],
+    quality: reader.qualities.readings(map),
+    days: dayMeanings(file),
   };
+}
+
+/** Counted columns of a day may follow the clock or the time passed; where there is one for a 25th hour, it is the latter. */
+function dayMeanings({ layout: { days }, map }: CsvFile): CsvMeaning['days'][] {
+  if (map.dayColumns !== undefined) return [map.dayColumns];
+  if (days === null || !days.counted) return ['clock'];
+  return days.slots.some(({ beginS }) => beginS >= 86_400) ? ['elapsed'] : ['clock', 'elapsed'];
+}
+
+/** Registers and energies of intervals are asked about where numbers and names leave both possible. */
+function energyMeanings({ layout, reader, map }: CsvFile): CsvMeaning['energy'][] {
+  if (map.energy !== undefined) return [map.energy];
+  const moves = (column: number) => movesOf(reader.valuesOf(column));
+  const open = layout.choices.some(({ columns }) => energyColumns(columns, moves).open.size > 0);
+  return open ? ['interval', 'register'] : [null];
+}
+
+function factorSigns({ layout, reader, map }: CsvFile): PowerFactorSign[] {
+  if (map.powerFactorSign !== undefined) return [map.powerFactorSign];
+  const factors = layout.choices.flatMap(({ columns }) =>
+    columns.filter(({ quantity }) => quantity === 'powerFactor').map(({ column }) => column),
+  );
+  return factors.some((column) => hasNegative(reader.valuesOf(column))) ? [...POWER_FACTOR_SIGNS] : ['negativeLeads'];
 }
 
 function settledAmong(file: CsvFile, points: OpenPoints): ReadResult {
@@ -83,18 +136,18 @@ function settledAmong(file: CsvFile, points: OpenPoints): ReadResult {
   return { ...first.result, notes: [...settledNotes(file, points, first.meaning), ...first.result.notes] };
 }
 
-function meanings({ choice, decimal, order, keep }: OpenPoints): CsvMeaning[] {
-  return choice.flatMap((chosen) =>
-    decimal.flatMap((sign) =>
-      order.flatMap((dates) => keep.map((kept) => ({ choice: chosen, decimal: sign, order: dates, keep: kept }))),
-    ),
-  );
+function meanings(points: OpenPoints): CsvMeaning[] {
+  const each = Object.entries(points) as [Point, CsvMeaning[Point][]][];
+  return each.reduce<Partial<CsvMeaning>[]>(
+    (known, [point, answers]) => known.flatMap((meaning) => answers.map((answer) => ({ ...meaning, [point]: answer }))),
+    [{}],
+  ) as CsvMeaning[];
 }
 
 /** The question a point needs: its answers, everything else taken as in the first meaning that can be. */
 function asked(point: Point, attempts: Attempt[]): QuestionAsked[] {
   const [first] = attempts;
-  const others = (['choice', 'decimal', 'order', 'keep'] as const).filter((other) => other !== point);
+  const others = (Object.keys(first!.meaning) as Point[]).filter((other) => other !== point);
   const beside = attempts.filter(({ meaning }) => others.every((other) => meaning[other] === first!.meaning[other]));
   const distinct: Attempt[] = [];
   for (const attempt of beside) {
@@ -104,23 +157,55 @@ function asked(point: Point, attempts: Attempt[]): QuestionAsked[] {
   const readings: QuestionReading[] = distinct.map(({ meaning, result }) =>
     shownReading(mapOf(point, meaning), result.columns),
   );
-  return [{ id: ID[point], about: ABOUT[point], readings }];
+  const { id, about } = ASKED[point];
+  return [{ id, about, readings }];
 }
 
-const ID: Record<Point, string> = { choice: 'columns', decimal: 'decimal', order: 'dateOrder', keep: 'keepRow' };
-
-const ABOUT: Record<Point, string> = {
-  choice: 'which columns hold active and reactive power, and in which unit',
-  decimal: 'whether the mark in numbers such as 1,234 or 1.234 is the decimal mark or divides thousands',
-  order: 'whether dates such as 03/04 have the day or the month first',
-  keep: 'which of several rows with the same time and different values counts',
+const ASKED: Record<Point, { id: string; about: string }> = {
+  choice: { id: 'columns', about: 'which columns hold active and reactive power, and in which unit' },
+  decimal: {
+    id: 'decimal',
+    about: 'whether the mark in numbers such as 1,234 or 1.234 is the decimal mark or divides thousands',
+  },
+  order: { id: 'dateOrder', about: 'whether dates such as 03/04 have the day or the month first' },
+  keep: { id: 'keepRow', about: 'which of several rows with the same time and different values counts' },
+  energy: {
+    id: 'energy',
+    about: 'whether the columns of energy hold the energy of each interval or the reading of a register',
+  },
+  powerFactorSign: {
+    id: 'powerFactorSign',
+    about: 'whether a negative power factor means leading kvar, lagging kvar, or exported power',
+  },
+  multiplier: { id: 'multiplier', about: 'whether the numbers still have to be multiplied by the transformer ratio' },
+  days: {
+    id: 'dayColumns',
+    about: 'whether the columns of a day follow the clock or count the time since midnight where clocks change',
+  },
+  quality: { id: 'quality', about: 'whether values of this quality are measured or missing' },
 };
 
 function mapOf(point: Point, meaning: CsvMeaning): MeterMap {
-  if (point === 'choice') return meaning.choice.map;
-  if (point === 'decimal') return meaning.decimal === null ? {} : { decimal: meaning.decimal };
-  if (point === 'order') return { dateOrder: meaning.order };
-  return meaning.keep === undefined ? {} : { keepRow: meaning.keep };
+  switch (point) {
+    case 'choice':
+      return meaning.choice.map;
+    case 'decimal':
+      return meaning.decimal === null ? {} : { decimal: meaning.decimal };
+    case 'order':
+      return { dateOrder: meaning.order };
+    case 'keep':
+      return meaning.keep === undefined ? {} : { keepRow: meaning.keep };
+    case 'energy':
+      return meaning.energy === null ? {} : { energy: meaning.energy };
+    case 'powerFactorSign':
+      return { powerFactorSign: meaning.powerFactorSign };
+    case 'multiplier':
+      return { multiplier: meaning.multiplier };
+    case 'days':
+      return { dayColumns: meaning.days };
+    case 'quality':
+      return { quality: { ...meaning.quality } };
+  }
 }
 
 function settledNotes({ reader, map }: CsvFile, points: OpenPoints, meaning: CsvMeaning): Remark[] {

@@ -1,3 +1,4 @@
+import { readDayFraction, readSerialStamp } from '../time/serial-dates.js';
 import { type DateForm, readStamp } from '../time/stamp-text.js';
 import type { HeaderColumn } from './header-column.js';
 
@@ -13,10 +14,12 @@ export interface TimeColumns {
   mark: 'begin' | 'end' | null;
   /** zone the words say the stamps are in */
   zone: string | null;
+  /** stamps are a spreadsheet's serial dates */
+  serial: boolean;
 }
 
 /** What the cells of a column hold. */
-export type TimeContent = 'stamp' | 'date' | 'clock' | null;
+export type TimeContent = 'stamp' | 'date' | 'clock' | 'serial' | 'serialDay' | 'fraction' | null;
 
 /**
  * What a column holds, judged by its first cells.
@@ -26,16 +29,34 @@ export function timeContent(cells: readonly string[]): TimeContent {
   const kinds = cells.filter((cell) => cell !== '').map(contentOf);
   if (kinds.length === 0 || kinds.includes(null)) return null;
   // exports drop the clock time at midnight
-  if (kinds.includes('stamp')) return kinds.includes('clock') ? null : 'stamp';
+  if (kinds.includes('stamp')) return kinds.every((kind) => kind === 'stamp' || kind === 'date') ? 'stamp' : null;
+  if (kinds.includes('serial'))
+    return kinds.every((kind) => kind === 'serial' || kind === 'serialDay') ? 'serial' : null;
   const [first] = kinds;
   return kinds.every((kind) => kind === first) ? (first ?? null) : null;
 }
 
 function contentOf(cell: string): TimeContent {
   const stamp = readStamp(cell);
-  if (stamp === null) return null;
+  if (stamp === null) return numberContent(cell);
   if (stamp.dateKey === null) return 'clock';
   return stamp.clockS === null ? 'date' : 'stamp';
+}
+
+function numberContent(cell: string): TimeContent {
+  if (readSerialStamp(cell) !== null) return /[.,]/.test(cell) ? 'serial' : 'serialDay';
+  return readDayFraction(cell) === null ? null : 'fraction';
+}
+
+/** Contents that only a column named for its time may have: numbers else. */
+const NUMBERS: readonly TimeContent[] = ['serial', 'serialDay', 'fraction'];
+
+/**
+ * Whether a text is a serial date, taken by itself.
+ * @param cell text without surrounding blanks
+ */
+export function isSerial(cell: string): boolean {
+  return readSerialStamp(cell) !== null;
 }
 
 /**
@@ -55,24 +76,31 @@ export function isDated(cell: string): { dateForm: DateForm } | null {
  */
 export function chooseTimeColumns(columns: readonly HeaderColumn[], rows: readonly string[][]): TimeColumns | null {
   const held = new Map<HeaderColumn, TimeContent>();
-  for (const column of columns) held.set(column, timeContent(rows.map((row) => row[column.index] ?? '')));
+  for (const column of columns) {
+    const content = timeContent(rows.map((row) => row[column.index] ?? ''));
+    held.set(column, column.role !== 'time' && NUMBERS.includes(content) ? null : content);
+  }
   const named = columns.filter(({ role }) => role === 'time');
   const unused = columns.filter(({ role }) => role === null || role === 'time');
   return chosen(named, held) ?? chosen(unused, held) ?? chosenUnread(named, rows);
 }
 
 function chosen(columns: readonly HeaderColumn[], held: Map<HeaderColumn, TimeContent>): TimeColumns | null {
-  const holding = (content: TimeContent) => columns.filter((column) => held.get(column) === content);
-  const stamps = beginAndEnd(holding('stamp'));
-  if (stamps !== null) return { stamp: stamps.at.index, clock: -1, ...rest(stamps, null) };
-  const dates = beginAndEnd(holding('date'));
-  const clocks = beginAndEnd(holding('clock'));
-  if (dates === null || clocks === null) return null;
-  return { stamp: dates.at.index, clock: clocks.at.index, ...rest(clocks, dates.at) };
+  const holding = (...contents: TimeContent[]) => columns.filter((column) => contents.includes(held.get(column)!));
+  const isSerialColumn = (column: HeaderColumn) => NUMBERS.includes(held.get(column)!);
+  const stamps = beginAndEnd(holding('stamp')) ?? beginAndEnd(holding('serial'));
+  if (stamps !== null) return { stamp: stamps.at.index, clock: -1, ...rest(stamps, null, isSerialColumn(stamps.at)) };
+  const dates = beginAndEnd(holding('date', 'serialDay'));
+  if (dates === null) return null;
+  const serial = isSerialColumn(dates.at);
+  const clocks = beginAndEnd(serial ? holding('clock', 'fraction') : holding('clock'));
+  if (clocks === null) return serial ? { stamp: dates.at.index, clock: -1, ...rest(dates, null, true) } : null;
+  return { stamp: dates.at.index, clock: clocks.at.index, ...rest(clocks, dates.at, serial) };
 }
 
-function rest(found: { at: HeaderColumn; end: HeaderColumn | null }, date: HeaderColumn | null) {
+function rest(found: { at: HeaderColumn; end: HeaderColumn | null }, date: HeaderColumn | null, serial: boolean) {
   return {
+    serial,
     end: found.end?.index ?? -1,
     mark: found.at.mark ?? date?.mark ?? null,
     zone: found.at.zone ?? date?.zone ?? null,
@@ -90,5 +118,5 @@ function beginAndEnd(columns: HeaderColumn[]): { at: HeaderColumn; end: HeaderCo
 /** A column named for its stamps whose first cells can't be read: its rows are then refused one by one. */
 function chosenUnread(named: readonly HeaderColumn[], rows: readonly string[][]): TimeColumns | null {
   const found = beginAndEnd(named.filter(({ index }) => rows.some((row) => isDated(row[index] ?? '')?.dateForm)));
-  return found === null ? null : { stamp: found.at.index, clock: -1, ...rest(found, null) };
+  return found === null ? null : { stamp: found.at.index, clock: -1, ...rest(found, null, false) };
 }

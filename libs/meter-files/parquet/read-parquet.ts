@@ -98,16 +98,21 @@ async function* textOf(file: SpooledFile, { groups, columns, options }: Rows): A
   );
   const whole = groups.reduce((sum, { num_rows: rows }) => sum + Number(rows), 0) || 1;
   let textBytes = 0;
+  const goOn = () => {
+    if (options.watch?.stopped()) throw new Stopped('the reading was stopped');
+    options.watch?.report(SPOOL_SHARE + (1 - SPOOL_SHARE) * Math.min(1, written.row / whole));
+  };
   for (const group of groups) {
+    goOn();
     for await (const _ of groupRows(file, { group, columns, written })) {
-      if (options.watch?.stopped()) throw new Stopped('the reading was stopped');
+      goOn();
       const chunk = written.take();
       textBytes += chunk.length;
       refuseText(textBytes, written.row);
       yield chunk;
-      options.watch?.report(SPOOL_SHARE + (1 - SPOOL_SHARE) * Math.min(1, written.row / whole));
     }
   }
+  goOn();
   yield written.take();
 }
 

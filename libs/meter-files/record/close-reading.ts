@@ -1,5 +1,6 @@
 import type { MeterMap } from '#libs/contract/meter-map.js';
-import { createLoadRecord, InputProblem, type Remark, type ZoneTable } from '#libs/engine/index.js';
+import { zoneTableOf } from '#libs/contract/time-zone.js';
+import { createLoadRecord, InputProblem, type Remark, recordSigns, type ZoneTable } from '#libs/engine/index.js';
 import type { MeterReading } from '../meter-format.js';
 import { note } from '../note.js';
 import type { RecordColumns } from './build-columns.js';
@@ -17,7 +18,7 @@ export interface ReadResult {
 }
 
 /**
- * Repairs where the map asks for it, and closes columns and notes into a record with its quality.
+ * Repairs where the map asks for it, looks the values over, and closes columns and notes into a record with its quality.
  * @param result what was read
  * @param map what a person says
  * @throws InputProblem where no interval is left
@@ -36,11 +37,22 @@ export function closeReading(result: ReadResult, map: MeterMap): MeterReading {
   if (repaired.intervals > 0) {
     notes.push(note('intervals-repaired', { method, intervals: repaired.intervals, upToS: map.upToS ?? 0 }));
   }
+  // months at either end reach beyond what the reader needed of the zone
+  const zone = zoneOfMonths(result);
+  const { questions, suspectZeros } = recordSigns(result.columns, zone);
+  notes.push(...questions);
   const record = createLoadRecord({
     ...repaired.columns,
     repaired: repaired.intervals,
     duplicates: result.duplicates,
     notes,
   });
-  return { record, quality: qualityOf(record, result.counts, result.zone) };
+  const repair = { method, upToS: method === 'none' ? null : (map.upToS ?? null) };
+  const basis = { measured: result.columns, repair, suspectZeros };
+  return { record, quality: qualityOf(record, result.counts, zone, basis) };
+}
+
+function zoneOfMonths({ columns, zone }: ReadResult): ZoneTable {
+  const { beginS, intervalS } = columns;
+  return zoneTableOf(zone.zone, { firstS: beginS[0]!, endS: beginS[beginS.length - 1]! + intervalS });
 }

@@ -3,6 +3,7 @@ import { Question, type QuestionReading } from '#libs/contract/question.js';
 import { zoneTableOf } from '#libs/contract/time-zone.js';
 import {
   InputProblem,
+  isRecordSign,
   type KeptRecord,
   type LoadRecord,
   mergeRecords,
@@ -10,10 +11,11 @@ import {
   type RecordOverlap,
   type RecordSeries,
   type Remark,
+  recordSigns,
 } from '#libs/engine/index.js';
 import { MAX_INTERVALS, type MeterReading } from '../meter-format.js';
 import { note } from '../note.js';
-import { type Quality, qualityOf } from './quality.js';
+import { type MonthQuality, type Quality, qualityOf } from './quality.js';
 import { shownReading, utcStamp } from './reading-shown.js';
 
 /** What is said about a file that extends a record. */
@@ -55,10 +57,25 @@ export function extendRecord(
   const keep = map.overlap ?? 'earlier';
   const merged = mergeRecords(earlier.record, later.record, keep);
   if (merged === earlier.record) return earlier;
-  const notes = [...merged.notes, ...notesOf({ earlier, later, merged }, overlap, keep)];
+  const zone = zoneTableOf(timeZone, merged);
+  // what the values ask is looked for anew, over the whole of them
+  const { questions, suspectZeros } = recordSigns(merged, zone);
+  const kept = merged.notes.filter((remark) => !isRecordSign(remark));
+  const notes = [...kept, ...notesOf({ earlier, later, merged }, overlap, keep), ...questions];
   const record: LoadRecord = { ...merged, notes };
   const counts = countsOf(earlier.quality, later.quality, overlap);
-  return { record, quality: qualityOf(record, counts, zoneTableOf(timeZone, record)) };
+  const repair = later.quality.repair.method === 'none' ? earlier.quality.repair : later.quality.repair;
+  const quality = qualityOf(record, counts, zone, { measured: merged, repair, suspectZeros });
+  return { record, quality: { ...quality, months: withRepairs(quality.months, [earlier.quality, later.quality]) } };
+}
+
+/** Each month with what was filled in either of the two. */
+function withRepairs(months: readonly MonthQuality[], before: readonly Quality[]): MonthQuality[] {
+  return months.map((month) => {
+    const filled = before.flatMap(({ months: parts }) => parts.filter((part) => part.month === month.month));
+    const repaired = filled.reduce((sum, part) => sum + part.repaired, 0);
+    return { ...month, repaired: Math.min(month.intervals, repaired) };
+  });
 }
 
 function refuseTooLong(intervals: number): void {

@@ -10,7 +10,9 @@ function quality(days: number, isLeftOut: (hour: number) => boolean = () => fals
   const zeros = new Float64Array(hours.length);
   const beginS = Float64Array.from(hours, (hour) => Date.UTC(2023, 0, 1) / 1000 + hour * 3600);
   const record = createLoadRecord({ intervalS: 3600, beginS, activeKw: zeros, laggingKvar: zeros, leadingKvar: zeros });
-  return qualityOf(record, { format: 'csv', rowsRead: hours.length, rejectedRows: 0 }, UTC_TABLE);
+  const counts = { format: 'csv', rowsRead: hours.length, rejectedRows: 0 };
+  const repair = { method: 'none', upToS: null } as const;
+  return qualityOf(record, counts, UTC_TABLE, { measured: record, repair, suspectZeros: [] });
 }
 
 describe('the quality of a record', () => {
@@ -22,6 +24,14 @@ describe('the quality of a record', () => {
     expect(quality(14).grade).toBe('limited');
     expect(quality(3).grade).toBe('insufficient');
     expect(quality(365, (hour) => hour % 3 === 1).grade).toBe('insufficient');
+  });
+
+  it('states how much of every month is there, the first and the last counted whole', () => {
+    const { months } = quality(31 + 14, (hour) => hour < 24 || (hour >= 100 && hour < 106));
+    expect(months).toEqual([
+      { month: '2023-01', intervalsExpected: 744, intervals: 714, coveredPct: (100 * 714) / 744, repaired: 0 },
+      { month: '2023-02', intervalsExpected: 672, intervals: 336, coveredPct: 50, repaired: 0 },
+    ]);
   });
 
   it('names the quarters of the year that it knows nothing of', () => {

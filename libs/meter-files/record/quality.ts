@@ -1,4 +1,16 @@
-import { type LoadRecord, localTime, type ZoneTable } from '#libs/engine/index.js';
+import type { MeterRepair } from '#libs/contract/meter-map.js';
+import {
+  gradeRecord,
+  isRecordSign,
+  type LoadRecord,
+  type MeteredColumns,
+  type MonthCoverage,
+  monthCoverage,
+  type RecordGrade,
+  type Remark,
+  type SuspectZeros,
+  type ZoneTable,
+} from '#libs/engine/index.js';
 
 /** Days of a season: a season counts as covered by ten days of valid intervals. */
 const SEASON_DAYS = 10;
@@ -10,6 +22,19 @@ export interface MissingSpan {
   beginS: number;
   endS: number;
   intervals: number;
+}
+
+/** Coverage of a local month, with what was filled in. */
+export interface MonthQuality extends MonthCoverage {
+  /** of `intervals`, those that a repair filled */
+  repaired: number;
+}
+
+/** How gaps were filled. */
+export interface RepairMade {
+  method: MeterRepair;
+  /** longest gap that was filled [s]; null where none was to be */
+  upToS: number | null;
 }
 
 /** How good the file behind a record was. */
@@ -25,12 +50,22 @@ export interface Quality {
   missingSpans: MissingSpan[];
   duplicates: number;
   repaired: number;
+  repair: RepairMade;
   /** rows that hold no valid interval: no value, a skipped hour, a repeat that was overruled, totals, headers */
   rejectedRows: number;
+  suspectZeroCount: number;
+  /** runs of exact zeros that are long against the record's habit; the first hundred, in time order */
+  suspectZeros: SuspectZeros[];
+  /** every local month the record touches */
+  months: MonthQuality[];
   /** quarters of the year with under ten days of valid intervals, by their months */
   seasonsMissing: ('Dec-Feb' | 'Mar-May' | 'Jun-Aug' | 'Sep-Nov')[];
-  /** by days of measured intervals and share missing: full 361 and 1 %, usable 85 and 5 %, limited 11 and 20 %, else insufficient */
-  grade: 'full' | 'usable' | 'limited' | 'insufficient';
+  /** full, usable, limited or insufficient */
+  grade: RecordGrade;
+  /** what it was given for */
+  gradeRule: Remark;
+  /** what the values ask of a person; each stands among the record's notes too */
+  questions: Remark[];
 }
 
 /** Counts only the reader knows. */
@@ -40,14 +75,23 @@ export interface ReadCounts {
   rejectedRows: number;
 }
 
+/** What stood in the file before gaps were filled, how they were, and the zeros that were found. */
+export interface ReadBasis {
+  measured: Pick<MeteredColumns, 'beginS' | 'intervalS'>;
+  repair: RepairMade;
+  suspectZeros: readonly SuspectZeros[];
+}
+
 /**
  * States the quality of a record.
  * @param record the record
  * @param counts of the rows it was read from
- * @param zone the zone whose months make the seasons
+ * @param zone the zone of months and seasons; it should reach a month beyond the record
+ * @param basis what the record was made from
  */
-export function qualityOf(record: LoadRecord, counts: ReadCounts, zone: ZoneTable): Quality {
+export function qualityOf(record: LoadRecord, counts: ReadCounts, zone: ZoneTable, basis: ReadBasis): Quality {
   const spans = missingSpans(record);
+  const months = monthsOf(record, basis.measured, zone);
   return {
     ...counts,
     intervalsExpected: record.beginS.length + record.missing,
@@ -55,8 +99,13 @@ export function qualityOf(record: LoadRecord, counts: ReadCounts, zone: ZoneTabl
     missingSpans: spans.first,
     duplicates: record.duplicates,
     repaired: record.repaired,
-    seasonsMissing: seasonsMissing(record, zone),
-    grade: gradeOf(record),
+    repair: basis.repair,
+    suspectZeroCount: basis.suspectZeros.length,
+    suspectZeros: basis.suspectZeros.slice(0, MOST_SPANS),
+    months,
+    seasonsMissing: seasonsMissing(months, record.intervalS),
+    ...gradeRecord(record),
+    questions: record.notes.filter(isRecordSign),
   };
 }
 
@@ -74,26 +123,21 @@ function missingSpans({ beginS, intervalS, missing }: LoadRecord): { first: Miss
   return { first, count };
 }
 
-const SEASONS = ['Dec-Feb', 'Mar-May', 'Jun-Aug', 'Sep-Nov'] as const;
-
-function seasonsMissing({ beginS, intervalS }: LoadRecord, zone: ZoneTable) {
-  const coveredS = [0, 0, 0, 0];
-  for (let i = 0; i < beginS.length; ) {
-    // the season is looked up once a day
-    const { month, secondOfDay } = localTime(zone, beginS[i]!);
-    const untilS = beginS[i]! + DAY_S - secondOfDay;
-    const from = i;
-    while (i < beginS.length && beginS[i]! < untilS) i++;
-    coveredS[Math.floor((month % 12) / 3)]! += (i - from) * intervalS;
-  }
-  return SEASONS.filter((_, index) => coveredS[index]! < SEASON_DAYS * DAY_S);
+function monthsOf(record: LoadRecord, measured: ReadBasis['measured'], zone: ZoneTable): MonthQuality[] {
+  // repairs fill gaps between measured intervals, so both touch the same months
+  const before = monthCoverage(measured, zone);
+  return monthCoverage(record, zone).map((month, at) => ({
+    ...month,
+    repaired: month.intervals - before[at]!.intervals,
+  }));
 }
 
-function gradeOf({ beginS, intervalS, repaired, missing }: LoadRecord): Quality['grade'] {
-  const measured = beginS.length - repaired;
-  const days = (measured * intervalS) / DAY_S;
-  const missingShare = (missing + repaired) / (beginS.length + missing);
-  if (days >= 361 && missingShare <= 0.01) return 'full';
-  if (days >= 85 && missingShare <= 0.05) return 'usable';
-  return days >= 11 && missingShare <= 0.2 ? 'limited' : 'insufficient';
+const SEASONS = ['Dec-Feb', 'Mar-May', 'Jun-Aug', 'Sep-Nov'] as const;
+
+function seasonsMissing(months: readonly MonthQuality[], intervalS: number) {
+  const coveredS = [0, 0, 0, 0];
+  for (const { month, intervals } of months) {
+    coveredS[Math.floor((Number(month.slice(-2)) % 12) / 3)]! += intervals * intervalS;
+  }
+  return SEASONS.filter((_, index) => coveredS[index]! < SEASON_DAYS * DAY_S);
 }

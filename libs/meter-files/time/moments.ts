@@ -3,6 +3,7 @@ import { InputProblem, type Remark, UTC_TABLE, type ZoneTable } from '#libs/engi
 import { note } from '../note.js';
 import { clockTimes, orderRows } from './clock-times.js';
 import { describeDate } from './date-orders.js';
+import { elapsedMoments } from './elapsed-days.js';
 import { localToUtc } from './local-times.js';
 import type { DateOrder } from './stamp-text.js';
 import type { StampedRows } from './stamped-rows.js';
@@ -18,6 +19,8 @@ export interface StampRules {
   zone: string | null;
   /** the zone stands in the header */
   zoneFromHeader: boolean;
+  /** clock times are the time passed since midnight, whatever the clock did */
+  elapsed: boolean;
 }
 
 /** Moments of the rows, before it is known how long an interval is. */
@@ -43,12 +46,16 @@ export interface Moments {
 export function momentsOf(rows: StampedRows, rules: StampRules, ends: boolean): Moments {
   const clock = clockTimes(rows, rules.order);
   if (rows.offsetS !== null) return ownMoments(rows, clock, rows.offsetS);
-  const { newestFirst, movedMidnights } = orderRows(clock, rows, rules.mark !== 'begin');
   const zone = zoneOver(rules.zone ?? 'UTC', clock);
-  const { utcS, doubledRows, onceRows } = localToUtc(clock, newestFirst, zone, ends || movedMidnights > 0);
   const notes: Remark[] = [];
   if (rules.zone === null) notes.push(note('zone-assumed-utc', {}));
   else if (rules.zoneFromHeader) notes.push(note('zone-from-header', { zone: rules.zone }));
+  if (rules.elapsed) {
+    const passedS = rows.clockS.subarray(0, rows.count);
+    return { utcS: elapsedMoments(clock, passedS, zone), clock, newestFirst: false, zone, notes };
+  }
+  const { newestFirst, movedMidnights } = orderRows(clock, rows, rules.mark !== 'begin');
+  const { utcS, doubledRows, onceRows } = localToUtc(clock, newestFirst, zone, ends || movedMidnights > 0);
   if (newestFirst) notes.push(note('rows-newest-first', { rows: rows.count }));
   if (movedMidnights > 0) notes.push(note('midnight-under-ending-day', { rows: movedMidnights }));
   if (doubledRows > 0) notes.push(note('doubled-hour-by-order', { rows: doubledRows }));

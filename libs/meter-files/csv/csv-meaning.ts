@@ -1,0 +1,49 @@
+import type { MeterMap, PowerFactorSign, QualityMeaning } from '#libs/contract/meter-map.js';
+import type { ReadOptions } from '../meter-format.js';
+import type { StampedRows } from '../time/stamped-rows.js';
+import type { DateOrder } from '../time/stamp-text.js';
+import type { ColumnChoice } from './column-choice.js';
+import type { CsvLayout } from './csv-layout.js';
+import type { DecimalMark, DecimalSign } from './decimal-mark.js';
+import type { RowQualities } from './row-qualities.js';
+import type { SkippedRows } from './row-shape.js';
+
+/** One way of reading whatever the file leaves open. */
+export interface CsvMeaning {
+  choice: ColumnChoice;
+  decimal: DecimalSign | null;
+  order: DateOrder;
+  keep: 'first' | 'last' | undefined;
+  /** what columns of energy hold; null where their names and numbers say it */
+  energy: 'interval' | 'register' | null;
+  powerFactorSign: PowerFactorSign;
+  multiplier: number;
+  /** meaning of quality codes, beside those that have one by custom */
+  quality: Readonly<Record<string, QualityMeaning>>;
+  /** what the columns of a row a day count */
+  days: 'clock' | 'elapsed';
+}
+
+/** The rows of a file as read, before anything is settled. */
+export interface ReadRows {
+  readonly rows: StampedRows;
+  readonly mark: DecimalMark;
+  readonly qualities: RowQualities;
+  readonly headers: SkippedRows;
+  readonly totals: SkippedRows;
+  /** columns of numbers, counted from 0, in the order of `rows.values` */
+  readonly columns: readonly number[];
+  /**
+   * The numbers of a column, an open decimal mark taken as such.
+   * @param column counted from 0
+   */
+  valuesOf(column: number): Float64Array;
+}
+
+/** A file whose rows have been read, before their meaning is settled. */
+export interface CsvFile {
+  layout: CsvLayout;
+  reader: ReadRows;
+  map: MeterMap;
+  options: ReadOptions;
+}

@@ -1,0 +1,117 @@
+import type { MeterMap } from '#libs/contract/meter-map.js';
+import { shown } from '#libs/contract/shown.js';
+import { InputProblem } from '#libs/engine/index.js';
+import { MAX_INTERVALS } from '../meter-format.js';
+import { refuseTooLong } from '../time/stamped-rows.js';
+import type { CsvLayout } from './csv-layout.js';
+import type { RowCells } from './row-cells.js';
+import { RowReader } from './row-reader.js';
+
+/** Rows of further meters are counted only. */
+const MOST_METERS = 50;
+
+/**
+ * Keeps the rows of each meter of a file apart. Where the map says which meter is wanted, rows of the others are passed
+ * over after a look at one cell.
+ */
+export class MeterRows {
+  /** the only reader of a file of one meter, or the first */
+  first: RowReader;
+  readonly #layout: CsvLayout;
+  readonly #map: MeterMap;
+  readonly #readers = new Map<string, RowReader>();
+  /** names met, with those whose rows are not kept */
+  readonly #names = new Set<string>();
+  // the meter of the row before, and the bytes of its cell
+  #lastBytes = new Uint8Array(0);
+  #last: RowReader | null = null;
+  #rows = 0;
+
+  constructor(layout: CsvLayout, map: MeterMap) {
+    this.#layout = layout;
+    this.#map = map;
+    this.first = new RowReader(layout, map);
+  }
+
+  /**
+   * Reads a row.
+   * @param cells the row
+   * @param rowNumber counted from 1
+   */
+  take(cells: RowCells, rowNumber: number): void {
+    if (this.#layout.side.meter.length === 0) {
+      this.first.take(cells, rowNumber);
+      return;
+    }
+    if (cells.isBlankFrom(0)) return;
+    const reader = this.#readerOf(cells);
+    if (reader === null) return;
+    const before = reader.rows.count;
+    reader.take(cells, rowNumber);
+    this.#rows += reader.rows.count - before;
+    if (this.#rows > MAX_INTERVALS) refuseTooLong(rowNumber);
+  }
+
+  /**
+   * Readers with rows of data, by the meter's name; one without a name where the file names no meters.
+   * @throws InputProblem where a row can't be read, or the map wants a meter that is not there
+   */
+  close(): { readers: Map<string, RowReader>; meters: number } {
+    if (this.#layout.side.meter.length === 0) this.#readers.set('', this.first);
+    for (const reader of this.#readers.values()) {
+      reader.stamps.end();
+      reader.problems.refuse();
+    }
+    const readers = new Map([...this.#readers].filter(([, { rows }]) => rows.count > 0));
+    const { meter } = this.#map;
+    if (meter !== undefined && readers.size === 0) this.#refuseAbsent(meter);
+    const named = [...readers.keys()].filter((name) => name !== '');
+    const nameless = readers.get('');
+    if (named.length > 0 && nameless !== undefined) this.#refuseNameless(nameless);
+    return { readers, meters: Math.max(readers.size, this.#names.size) };
+  }
+
+  #readerOf(cells: RowCells): RowReader | null {
+    const { meter } = this.#layout.side;
+    const [column] = meter;
+    if (meter.length === 1 && column! < cells.count && sameBytes(cells, column!, this.#lastBytes)) return this.#last;
+    const name = meter.map((one) => cells.text(one)).join(' / ');
+    this.#last = this.#readerNamed(name);
+    this.#lastBytes =
+      column! < cells.count ? cells.bytes.slice(cells.from[column!]!, cells.to[column!]!) : new Uint8Array(0);
+    return this.#last;
+  }
+
+  #readerNamed(name: string): RowReader | null {
+    const known = this.#readers.get(name);
+    if (known !== undefined) return known;
+    const isHeader = this.#layout.side.meter.map((column) => this.#layout.names[column]).join(' / ') === name;
+    if (!isHeader && name !== '') this.#names.add(name);
+    const wanted = this.#map.meter;
+    if (wanted !== undefined && wanted.trim() !== name) return null;
+    if (this.#readers.size >= MOST_METERS) return null;
+    const reader = this.#readers.size === 0 ? this.first : new RowReader(this.#layout, this.#map);
+    this.#readers.set(name, reader);
+    return reader;
+  }
+
+  #refuseAbsent(meter: string): never {
+    const names = [...this.#names].slice(0, 20).join(', ');
+    throw new InputProblem([
+      { code: 'out-of-range', path: 'meter', expected: `a meter of the file: ${names}`, found: shown(meter) },
+    ]);
+  }
+
+  #refuseNameless({ rows }: RowReader): never {
+    const column = this.#layout.side.meter[0]! + 1;
+    const expected = 'the name of the meter, as in other rows';
+    throw new InputProblem([{ code: 'missing', row: rows.rowNumber[0]!, column, expected, found: 'nothing' }]);
+  }
+}
+
+function sameBytes({ bytes, from, to }: RowCells, column: number, known: Uint8Array): boolean {
+  const at = from[column]!;
+  if (known.length === 0 || to[column]! - at !== known.length) return false;
+  for (let i = 0; i < known.length; i++) if (bytes[at + i] !== known[i]) return false;
+  return true;
+}
