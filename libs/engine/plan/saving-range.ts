@@ -109,8 +109,10 @@ function operatedInPart(study: Study, { bank, control }: WeighedBank): Operated 
  */
 export function outColumn({ record }: Pick<Study, 'record'>): Uint8Array {
   const dayS = Math.min(DAY_S, (record.endS - record.firstS) / DAYS_TO_ONE_OUT);
-  return Uint8Array.from(record.beginS, (beginS) => {
-    const day = Math.floor((beginS - record.firstS) / dayS) % DAYS_TO_ONE_OUT;
-    return day === DAYS_TO_ONE_OUT - 1 ? 1 : 0;
-  });
+  const out = new Uint8Array(record.beginS.length);
+  for (let i = 0; i < out.length; i++) {
+    const day = Math.floor((record.beginS[i]! - record.firstS) / dayS);
+    if (day % DAYS_TO_ONE_OUT === DAYS_TO_ONE_OUT - 1) out[i] = 1;
+  }
+  return out;
 }
