@@ -15,6 +15,7 @@ import {
 /** What a bank may be built from. */
 export const catalogueSchema = z.strictObject({
   stageKvar: listOf(quantity('stageKvar', POSITIVE), 1, 60).optional(),
+  kvarBasis: z.enum(['rated', 'effective']).optional(),
   ratedV: listOf(quantity('ratedV', CAPACITOR_V), 1, 40).optional(),
   reactorPct: listOf(reactorPct(), 1, 20).optional(),
   maxStages: whole(1, 24).optional(),

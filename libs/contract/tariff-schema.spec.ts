@@ -150,6 +150,12 @@ const refused: [why: string, tariff: unknown, path: string, code: string][] = [
     'missing',
   ],
   [
+    'a contract without a price for its overrun',
+    oneClause({ name: 'd', kind: 'contractedDemand', basis: 'kVA', contracted: 250, pricePerUnit: 4.5 }),
+    'tariff.clauses[0].overrunPricePerUnit',
+    'missing',
+  ],
+  [
     'bands that rise',
     oneClause({
       name: 'd',

@@ -66,6 +66,9 @@ const common = {
   reactive: reactive.optional(),
 };
 
+/** Formed once a month, whatever its length. */
+const { per: _, ...monthly } = common;
+
 const billedQuantity = {
   wholeUnits: z.enum(['up', 'down', 'nearest']).optional(),
   minimum: plain(NOT_NEGATIVE).optional(),
@@ -111,6 +114,18 @@ const clause = z.discriminatedUnion('kind', [
     scale: scale.optional(),
     pricePerUnit: price.optional(),
     prices: pricesByWindow.optional(),
+  }),
+  z.strictObject({
+    kind: z.literal('contractedDemand'),
+    ...monthly,
+    basis: z.enum(['kW', 'kVA', 'kWOrKvaShare']),
+    kvaShare: plain({ above: 0, max: 10 }).optional(),
+    wholeUnits: billedQuantity.wholeUnits,
+    contracted: plain(NOT_NEGATIVE),
+    pricePerUnit: price,
+    overrunPricePerUnit: price,
+    tolerancePct: quantity('tolerancePct', { min: 0, max: 1000 }).optional(),
+    leastPct: quantity('leastPct', { min: 0, max: 100 }).optional(),
   }),
   z.strictObject({
     kind: z.literal('percent'),

@@ -67,6 +67,16 @@ export const MONEY_MESSAGES: Messages = {
     text: 'No bank is tried that has a stage to spare over the record’s greatest kvar.',
     consequence: 'Give the most that may be built.',
   },
+  'money.idealControl': {
+    level: 'to be noted',
+    text: 'Savings are those of a controller that decides on the averages of the interval it acts in.',
+    consequence: 'Read the saving as a range: it is an estimate, not a guarantee.',
+  },
+  'money.sameLoad': {
+    level: 'to be noted',
+    text: 'The load of the record comes back every year.',
+    consequence: 'Ask what is to be added or closed.',
+  },
   'search.newBank': {
     level: 'information',
     text: 'Of all candidates that hold, this bank has the greatest net present value, {value}.',

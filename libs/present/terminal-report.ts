@@ -12,10 +12,12 @@ import { deviceTable, openDevices } from './device-words.js';
 import { dutyName } from './figure-words.js';
 import { formatApart, formatNumber, formatQuantity, GAP } from './format-number.js';
 import { formatLength, formatMoment } from './local-stamp.js';
+import { moneyLines } from './money-lines.js';
 import { plainName } from './plain-name.js';
 import { estimateWords, proposedWords } from './proposed-words.js';
 import { gradeWords, MONTH_HEADS, monthCells, type QualityStated, qualityRows } from './quality-words.js';
 import { remarkConsequence, remarkSentence } from './remark-words.js';
+import { spareWaysLines } from './spare-ways-lines.js';
 import { finished, tableLines } from './terminal-lines.js';
 import { countDuties, NO_PERMISSION, verdictWords } from './verdict-words.js';
 
@@ -54,6 +56,8 @@ export function resultReport(outcome: Outcome): string {
     row('switchings', formatNumber(operation.totalSwitchings, 'whole')),
     ...networkLines(result),
     '',
+    ...moneyRows(outcome),
+    ...spareRows(outcome),
     ...dutyLines(outcome),
     ...deviceLines(outcome),
     ...reasonLines(outcome),
@@ -203,6 +207,16 @@ function recordLines(record: RecordSummary, zone: ZoneTable): string[] {
       ' '.repeat(LABEL_WIDTH),
     ),
   ];
+}
+
+function moneyRows(outcome: Outcome): string[] {
+  const lines = moneyLines(outcome);
+  return lines.length === 0 ? [] : [...lines.map(({ label, text }) => row(label, text)), ''];
+}
+
+function spareRows(outcome: BankOutcome): string[] {
+  const lines = spareWaysLines(outcome);
+  return lines.length === 0 ? [] : [...lines.map((text, k) => row(k === 0 ? 'room for more stages' : '', text)), ''];
 }
 
 function dutyLines({ result }: BankOutcome): string[] {

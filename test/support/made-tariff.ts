@@ -1,6 +1,7 @@
 import type {
   BilledQuantity,
   Clause,
+  ContractedDemandClause,
   DemandClause,
   EnergyClause,
   ReactiveBasis,
@@ -44,6 +45,7 @@ const KINDS: Clause['kind'][] = [
   'kvarhBeyondRatio',
   'kvarBeyondRatio',
   'demand',
+  'contractedDemand',
   'percent',
   'formula',
 ];
@@ -108,6 +110,10 @@ function madeClause(random: Chance, name: string, before: readonly Clause[]): Cl
     }
     case 'demand':
       return { ...common, kind, ...madeBilled(random), ...madeDemand(random, price) };
+    case 'contractedDemand': {
+      const { per: _, ...monthly } = common;
+      return { ...monthly, kind, ...madeContract(random, price) };
+    }
     case 'percent': {
       const names = before.map((clause) => clause.name).filter(() => random.next() < 0.6);
       const applies = names.length === 0 || random.next() < 0.4 ? ('all' as const) : names;
@@ -160,6 +166,23 @@ function madeDemand(random: Chance, price: () => number): Pick<DemandClause, 'ba
       { pricePerUnit: 10 * price() },
       { prices: { peak: 10 * price(), offPeak: 5 * price(), rest: price() } },
     ]),
+  };
+}
+
+function madeContract(
+  random: Chance,
+  price: () => number,
+): Omit<ContractedDemandClause, 'name' | 'kind' | 'months' | 'windows' | 'taxed' | 'per' | 'reactive'> {
+  const pricePerUnit = 10 * price();
+  return {
+    basis: random.oneOf(['kW', 'kVA', 'kWOrKvaShare'] as const),
+    kvaShare: 0.9,
+    contracted: random.whole(50, 400),
+    pricePerUnit,
+    overrunPricePerUnit: random.oneOf([1, 2, 3]) * pricePerUnit,
+    ...some(random, 0.4, () => ({ wholeUnits: random.oneOf(['up', 'down', 'nearest'] as const) })),
+    ...some(random, 0.5, () => ({ tolerancePct: random.oneOf([5, 10]) })),
+    ...some(random, 0.5, () => ({ leastPct: random.oneOf([0, 50, 85]) })),
   };
 }
 

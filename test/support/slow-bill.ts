@@ -1,6 +1,7 @@
 import type {
   BilledQuantity,
   Clause,
+  ContractedDemandClause,
   DemandClause,
   EnergyByFactorClause,
   EnergyClause,
@@ -101,6 +102,8 @@ class Clerk {
         return this.#kvar(clause, readings, at);
       case 'demand':
         return this.#demand(clause, readings, at);
+      case 'contractedDemand':
+        return this.#contracted(clause, readings, at.c);
       case 'percent': {
         const base = at.lines.filter((line) => clause.applies === 'all' || clause.applies.includes(line.clause));
         const pct = slowPct(clause.scale, this.#meter.factor(readings));
@@ -189,6 +192,19 @@ class Clerk {
       quantity: Math.max(0, ...parts.map(({ billed }) => billed)),
       amount: parts.reduce((sum, { amount }) => sum + amount, 0),
     };
+  }
+
+  // three stretches of the demand: under the contract's floor, up to the tolerance, beyond it
+  #contracted(clause: ContractedDemandClause, readings: Reading[], c: number): Priced {
+    const { maxKw, maxKva } = this.#meter.maxima(readings, 'lagging');
+    const bases = { kW: maxKw, kVA: maxKva, kWOrKvaShare: Math.max(maxKw, (clause.kvaShare ?? 0) * maxKva) };
+    const own = wholeUnits(clause, bases[clause.basis]);
+    const floor = (clause.contracted * (clause.leastPct ?? 100)) / 100;
+    const top = clause.contracted + (clause.contracted * (clause.tolerancePct ?? 0)) / 100;
+    if (own <= floor) return { quantity: floor, amount: floor * clause.pricePerUnit * c };
+    if (own <= top) return { quantity: own, amount: own * clause.pricePerUnit * c };
+    const atPrice = top * clause.pricePerUnit;
+    return { quantity: own, amount: (atPrice + (own - top) * clause.overrunPricePerUnit) * c };
   }
 
   #billed(clause: Clause & BilledQuantity, part: string, at: MonthAt, formed: () => number[]): number {

@@ -112,6 +112,13 @@ function setPointsOf({ site }: SearchCase, catalogue: CatalogueInput): number[] 
   return [...hundredths.filter((point) => point < 1), 1];
 }
 
+/** Output at the bus of a stage of 1 kvar: U²/(X_C − X_L), X_C = U_N²/1 kvar. */
+function effectiveOfOne(ratedV: number, reactorPct: number, nominalV: number): number {
+  const capacitiveOhm = ratedV ** 2 / 1000;
+  const inductiveOhm = capacitiveOhm * (reactorPct / 100);
+  return nominalV ** 2 / (capacitiveOhm - inductiveOhm) / 1000;
+}
+
 interface Way {
   stages: number[];
   ratedV: number;
@@ -132,8 +139,13 @@ function ways(made: SearchCase, catalogue: CatalogueInput): Way[] {
   const electrical = paired(catalogue.ratedV!, catalogue.reactorPct!);
   const controlled = paired([...kinds], setPointsOf(made, catalogue));
   return paired(allowed, paired(electrical, controlled)).flatMap(
-    ([stages, [[ratedV, reactorPct], [[kind, { maxStageKvar }], setPoint]]]) =>
-      stages[0]! > maxStageKvar ? [] : [{ stages, ratedV, reactorPct, kind, setPoint }],
+    ([listed, [[ratedV, reactorPct], [[kind, { maxStageKvar }], setPoint]]]) => {
+      // ordered by output: the stage whose effective kvar at the bus is the size of the list
+      const byOutput = catalogue.kvarBasis === 'effective' && reactorPct > 0;
+      const share = byOutput ? effectiveOfOne(ratedV, reactorPct, made.site.bus.nominalV) : 1;
+      const stages = listed.map((kvar) => kvar / share);
+      return stages[0]! > maxStageKvar ? [] : [{ stages, ratedV, reactorPct, kind, setPoint }];
+    },
   );
 }
 

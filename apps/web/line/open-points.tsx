@@ -131,10 +131,21 @@ function pointOf(remark: Remark): Point {
     text: text.replace(/\.$/, ''),
     why: remarkConsequence(remark),
     path,
-    spread: effect === null ? null : Math.abs(effect.high - effect.low),
+    spread: effect === null ? null : spreadOf(effect),
     effect: effect === null ? '' : effect.changesVerdict ? DECIDES : rangeWords(effect),
   };
 }
+
+// A duty's effect is a share of its limit; an amount of money is brought to a share of itself.
+function spreadOf({ figure, low, high }: NonNullable<Remark['effect']>): number {
+  const whole = figure.startsWith('money.') ? Math.max(Math.abs(low), Math.abs(high), 1) : 1;
+  return Math.abs(high - low) / whole;
+}
+
+const MONEY_FIGURES: Record<string, string> = {
+  'money.npv': 'net present value',
+  'money.savingPerYear': 'saving a year',
+};
 
 function rangeWords({ figure, low, high }: NonNullable<Remark['effect']>): string {
   const duty = /^duties\.(.+)$/.exec(figure)?.[1];
@@ -142,6 +153,8 @@ function rangeWords({ figure, low, high }: NonNullable<Remark['effect']>): strin
     const percent = { low: Math.round(100 * low), high: Math.round(100 * high) };
     return `${duty}: ${formatRange(percent, '%')} of its limit`;
   }
+  const money = MONEY_FIGURES[figure];
+  if (money !== undefined) return `${money}: ${formatRange({ low: Math.round(low), high: Math.round(high) }, '')}`;
   if (/kvar$/i.test(figure)) return `± ${formatQuantity(Math.abs(high - low) / 2, 'kvar')}`;
   return formatRange({ low, high }, '', 'computed');
 }

@@ -1,6 +1,7 @@
 import { InputProblem } from '../problem.js';
 import type { Bank, StageGroup } from './bank.js';
-import type { CatalogueInput } from './catalogue.js';
+import type { CatalogueInput, KvarBasis } from './catalogue.js';
+import { nameplateKvar } from './stage.js';
 
 /** The shipped list of preferred sizes; common practice, no source. */
 export const COMMON_CATALOGUE = {
@@ -13,6 +14,7 @@ export const COMMON_CATALOGUE = {
 /** The catalogue a layout is proposed from, every list ascending. */
 export interface SettledCatalogue {
   stageKvar: number[];
+  kvarBasis: KvarBasis;
   ratedV: number[];
   reactorPct: number[];
   maxStages: number;
@@ -50,6 +52,7 @@ export function settleCatalogue(
   return {
     catalogue: {
       stageKvar: ascending(input?.stageKvar ?? COMMON_CATALOGUE.stageKvar),
+      kvarBasis: input?.kvarBasis ?? 'rated',
       ratedV: ascending(input?.ratedV ?? COMMON_CATALOGUE.ratedV),
       reactorPct: ascending(input?.reactorPct ?? COMMON_CATALOGUE.reactorPct),
       maxStages: input?.maxStages ?? COMMON_CATALOGUE.maxStages,
@@ -90,16 +93,16 @@ export function layouts(catalogue: Pick<SettledCatalogue, 'stageKvar' | 'maxStag
 /**
  * The bank a layout makes with a rated voltage and a reactor ratio; smaller stages first.
  * @param layout sizes and counts
- * @param build rated voltage [V], reactor ratio [%], catalogue, reactor quality
+ * @param build rated voltage and bus voltage [V], reactor ratio [%], catalogue, reactor quality
  * @returns the bank
  */
 export function bankOf(
   layout: Layout,
-  build: { ratedV: number; reactorPct: number; reactorQuality: number; catalogue: SettledCatalogue },
+  build: { ratedV: number; nominalV: number; reactorPct: number; reactorQuality: number; catalogue: SettledCatalogue },
 ): Bank {
-  const group = (count: number, ratedKvar: number): StageGroup => ({
+  const group = (count: number, kvar: number): StageGroup => ({
     count,
-    ratedKvar,
+    ratedKvar: nameplateKvar(kvar, build, build.catalogue.kvarBasis),
     ratedV: build.ratedV,
     reactorPct: build.reactorPct,
     reactorQuality: build.reactorQuality,

@@ -1,8 +1,8 @@
 import { InputProblem } from '../problem.js';
 import type { Bank } from './bank.js';
 import type { SettledCatalogue } from './candidates.js';
-import type { CatalogueInput } from './catalogue.js';
-import { effectiveKvar } from './stage.js';
+import type { CatalogueInput, KvarBasis } from './catalogue.js';
+import { effectiveKvar, nameplateKvar } from './stage.js';
 import { eachStageCount } from './stage-counts.js';
 
 /** A kind of switch a bank may be built with; what it leaves open is the controller's own. */
@@ -38,6 +38,8 @@ export interface Build {
 /** Everything a search chooses from. */
 export interface SearchSpace {
   stageKvar: readonly number[];
+  kvarBasis: KvarBasis;
+  nominalV: number;
   builds: Build[];
   kinds: SwitchKind[];
   setPoints: number[];
@@ -83,7 +85,8 @@ export function searchSpace(basis: SpaceBasis): SearchSpace {
       if (candidates > MOST_CANDIDATES) throw tooMany();
     }
   });
-  return { stageKvar: catalogue.stageKvar, builds, kinds, setPoints, candidates };
+  const { stageKvar, kvarBasis } = catalogue;
+  return { stageKvar, kvarBasis, nominalV: basis.nominalV, builds, kinds, setPoints, candidates };
 }
 
 /**
@@ -113,7 +116,8 @@ function buildOf(
   counts: Int32Array,
   { ratedV, reactorPct }: { ratedV: number; reactorPct: number },
 ): Build | null {
-  const { stageKvar, maxTotalKvar } = basis.catalogue;
+  const { stageKvar, maxTotalKvar, kvarBasis } = basis.catalogue;
+  const build = { ratedV, reactorPct, nominalV: basis.nominalV };
   let stages = 0;
   let ratedKvar = 0;
   let totalKvar = 0;
@@ -123,7 +127,7 @@ function buildOf(
   for (let size = stageKvar.length - 1; size >= 0; size--) {
     const count = counts[size]!;
     if (count === 0) continue;
-    const kvar = stageKvar[size]!;
+    const kvar = nameplateKvar(stageKvar[size]!, build, kvarBasis);
     const effective = effectiveKvar(stageOf(kvar, ratedV, reactorPct), basis.nominalV);
     if (stages === 0) {
       largestRatedKvar = kvar;
@@ -158,21 +162,26 @@ function stageOf(ratedKvar: number, ratedV: number, reactorPct: number): Bank['g
 
 /**
  * The bank of a build, largest stages first.
- * @param space sizes
+ * @param space sizes, what they say, bus voltage
  * @param build counts, voltage and reactors
  * @param catalogue inductance between stages
  * @param limitsInrush its switches limit inrush
  * @returns the bank
  */
 export function bankOfBuild(
-  space: Pick<SearchSpace, 'stageKvar'>,
+  space: Pick<SearchSpace, 'stageKvar' | 'kvarBasis' | 'nominalV'>,
   build: Build,
   catalogue: Pick<SettledCatalogue, 'interStageUh' | 'interStageGiven'>,
   limitsInrush: boolean,
 ): Bank {
+  const { ratedV, reactorPct } = build;
+  const way = { ratedV, reactorPct, nominalV: space.nominalV };
   const groups = [...space.stageKvar.entries()]
     .filter(([size]) => build.counts[size]! > 0)
-    .map(([size, kvar]) => ({ ...stageOf(kvar, build.ratedV, build.reactorPct), count: build.counts[size]! }))
+    .map(([size, kvar]) => ({
+      ...stageOf(nameplateKvar(kvar, way, space.kvarBasis), ratedV, reactorPct),
+      count: build.counts[size]!,
+    }))
     .reverse();
   return {
     groups,

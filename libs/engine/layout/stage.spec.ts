@@ -1,6 +1,14 @@
 import { describe, expect, it } from 'vitest';
 import type { StageGroup } from './bank.js';
-import { capacitorV, deltaCapacitanceUf, effectiveKvar, ratedA, stageOhm, tunedOrderH } from './stage.js';
+import {
+  capacitorV,
+  deltaCapacitanceUf,
+  effectiveKvar,
+  nameplateKvar,
+  ratedA,
+  stageOhm,
+  tunedOrderH,
+} from './stage.js';
 
 const stage = (more: Partial<StageGroup> = {}): StageGroup => ({
   count: 1,
@@ -24,6 +32,16 @@ describe('a stage', () => {
     const { inductiveOhm, resistanceOhm } = stageOhm(stage({ reactorPct: 20 }));
     expect(inductiveOhm).toBeCloseTo(0.8, 12);
     expect(resistanceOhm).toBeCloseTo(0.04, 12);
+  });
+
+  it('ordered by its output gives that output, and one ordered by its nameplate has it', () => {
+    // 25 kvar at 400 V behind 7 %: 25 · 0.93 · (480 / 400)² = 33.48 kvar at 480 V
+    const build = { ratedV: 480, nominalV: 400, reactorPct: 7 };
+    const ratedKvar = nameplateKvar(25, build, 'effective');
+    expect(ratedKvar).toBeCloseTo(33.48, 12);
+    expect(effectiveKvar(stage({ ...build, ratedKvar }), 400)).toBeCloseTo(25, 12);
+    expect(nameplateKvar(25, build, 'rated')).toBe(25);
+    expect(nameplateKvar(25, { ...build, reactorPct: 0 }, 'effective')).toBe(25);
   });
 
   it.each([

@@ -1,4 +1,5 @@
 import type { StageGroup } from './bank.js';
+import type { KvarBasis } from './catalogue.js';
 
 /** Reactances of one stage at the fundamental, per phase, star equivalent [Ω]. */
 export interface StageOhm {
@@ -31,6 +32,24 @@ export function stageOhm(group: StageGroup): StageOhm {
  */
 export function effectiveKvar(group: StageGroup, busV: number): number {
   return (busV * busV) / (stageOhm(group).capacitiveOhm * (1 - group.reactorPct / 100)) / 1000;
+}
+
+/**
+ * The nameplate a size of a catalogue stands for. A detuned stage ordered by its output at nominal bus voltage has
+ * Q_N = Q·(1−p)·(U_N/U)²; a plain one, and any size by nameplate, is Q_N itself.
+ * @param kvar the catalogue's size [kvar]
+ * @param build rated and bus voltage [V], reactor ratio [%]
+ * @param basis what the size says
+ * @returns Q_N [kvar]
+ * @source method-bank
+ */
+export function nameplateKvar(
+  kvar: number,
+  { ratedV, nominalV, reactorPct }: { ratedV: number; nominalV: number; reactorPct: number },
+  basis: KvarBasis,
+): number {
+  if (basis === 'rated' || reactorPct === 0) return kvar;
+  return kvar * (1 - reactorPct / 100) * (ratedV / nominalV) ** 2;
 }
 
 /**

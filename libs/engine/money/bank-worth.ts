@@ -45,6 +45,41 @@ export function savingOf(months: readonly TariffMonth[], bills: { before: Bill; 
   return savingByMonth(months, totals(bills.before), totals(bills.after));
 }
 
+/** Both sides of a net present value. */
+export interface PresentParts {
+  /** of savings less losses: what moves with the tariff */
+  gain: number;
+  /** of capital, maintenance and replacements: what moves with the costs */
+  cost: number;
+}
+
+/**
+ * The two sides of a net present value, which is gain − cost.
+ * @param savingByMonth saving of each calendar month, January first
+ * @param firstMonth calendar month of month 1, 1 … 12
+ * @param costs capital and running costs
+ * @param finance discount, horizon and growth
+ * @returns present values
+ * @source method-money
+ */
+export function presentParts(
+  savingByMonth: ArrayLike<number>,
+  firstMonth: number,
+  costs: { capital: number; running: Running },
+  finance: SettledFinance,
+): PresentParts {
+  const { capital, running } = costs;
+  const lossOnly = { ...NO_RUNNING, lossPerYear: running.lossPerYear };
+  const gain = netColumn(savingByMonth, firstMonth, { capital: 0, running: lossOnly }, finance);
+  const cost = netColumn(
+    new Float64Array(12),
+    firstMonth,
+    { capital, running: { ...running, lossPerYear: 0 } },
+    finance,
+  );
+  return { gain: presentValue(gain, finance.discountPct), cost: -presentValue(cost, finance.discountPct) };
+}
+
 /**
  * What a bank is worth: capital, running costs, cash flow, present value, rate, payback, annuity.
  * @param bank the bank; null where nothing is built or kept

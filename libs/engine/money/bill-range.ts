@@ -9,6 +9,7 @@ import {
   type RangeGround,
   type RangeRun,
 } from './clause-range.js';
+import { contractedRange } from './contracted-clause.js';
 import { demandRange, formulaClauseRange, kvarRange } from './demand-range.js';
 import type { MeterBox } from './meter-box.js';
 import type { Clause } from './papers.js';
@@ -55,6 +56,8 @@ function rangedClause(ground: RangeGround, clause: Clause, k: number): RangedCla
       return kvarRange(ground, clause);
     case 'demand':
       return demandRange(ground, clause, path);
+    case 'contractedDemand':
+      return contractedRange(ground, clause);
     case 'percent': {
       const earlier = (ground.tariff.clauses ?? []).slice(0, k).map(({ name }) => name);
       return percentRange(ground, clause, earlier);

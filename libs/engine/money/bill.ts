@@ -64,6 +64,19 @@ export function billMonth(prepared: PreparedTariff, m: number, columns: MeterCol
 }
 
 /**
+ * The totals of a record's bills, month by month, without workings.
+ * @param prepared the tariff on its record
+ * @param columns what the meter reads, length n
+ * @returns totals in the site's currency
+ * @throws InputProblem where a clause has no finite value
+ * @source method-money
+ */
+export function billTotals(prepared: PreparedTariff, columns: MeterColumns): number[] {
+  const carried = newCarried(prepared);
+  return prepared.calendar.months.map((_, m) => billMonth(prepared, m, columns, carried));
+}
+
+/**
  * The bills of a record, each line with its working.
  * @param prepared the tariff on its record
  * @param columns what the meter reads, length n

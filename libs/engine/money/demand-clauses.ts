@@ -61,7 +61,8 @@ export function demandClause(ground: ClauseGround, clause: DemandClause, path: s
   return priced(parts, formed, { unit: basis.unit, carries: clause.ratchet !== undefined });
 }
 
-const DEMAND_BASES: Record<
+/** How each basis forms a quantity, and says so. */
+export const DEMAND_BASES: Record<
   DemandClause['basis'],
   {
     unit: string;

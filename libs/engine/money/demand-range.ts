@@ -51,7 +51,19 @@ export function demandRange(ground: RangeGround, clause: DemandClause, path: str
   return { carries: clause.ratchet !== undefined, range: (run) => billedRange(parts, formed, run) };
 }
 
-function basisRange(box: DemandBox, period: number, { basis, kvaShare = 0 }: DemandClause): Range {
+/**
+ * Bounds of a demand by its basis.
+ * @param box the demand's ends
+ * @param period index of the period
+ * @param clause basis and share of the kVA
+ * @returns its range
+ * @source derived: each basis rises with kW and kVA
+ */
+export function basisRange(
+  box: DemandBox,
+  period: number,
+  { basis, kvaShare = 0 }: Pick<DemandClause, 'basis' | 'kvaShare'>,
+): Range {
   const kw = box.maxKw(period);
   if (basis === 'kW') return kw;
   const kva = box.maxKva(period);

@@ -128,6 +128,22 @@ export interface DemandClause extends ClauseCommon, BilledQuantity {
   prices?: Record<string, number>;
 }
 
+/** A demand contracted for, with a dearer price for what is drawn beyond it; formed once a month. */
+export interface ContractedDemandClause extends ClauseCommon {
+  kind: 'contractedDemand';
+  basis: 'kW' | 'kVA' | 'kWOrKvaShare';
+  kvaShare?: number;
+  wholeUnits?: 'up' | 'down' | 'nearest';
+  /** in the unit of the basis */
+  contracted: number;
+  pricePerUnit: number;
+  overrunPricePerUnit: number;
+  /** beyond the contracted value and still at its price; 0 where absent [%] */
+  tolerancePct?: number;
+  /** of the contracted value, billed whatever is drawn; 100 where absent [%] */
+  leastPct?: number;
+}
+
 /** A percentage of earlier lines that depends on the power factor. */
 export interface PercentClause extends ClauseCommon {
   kind: 'percent';
@@ -150,6 +166,7 @@ export type Clause =
   | KvarhBeyondRatioClause
   | KvarBeyondRatioClause
   | DemandClause
+  | ContractedDemandClause
   | PercentClause
   | FormulaClause;
 

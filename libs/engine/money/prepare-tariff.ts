@@ -1,6 +1,7 @@
 import { InputProblem } from '../problem.js';
 import type { ZoneTable } from '../record/zone-table.js';
 import { type ClauseGround, type MonthRun, type ReadyClause } from './clause-ground.js';
+import { contractedClause } from './contracted-clause.js';
 import { demandClause, kvarClause } from './demand-clauses.js';
 import { formulaClause, percentClause, quantityOf } from './derived-clauses.js';
 import { energyByFactorClause, energyClause, fixedClause, kvarhClause } from './energy-clauses.js';
@@ -112,6 +113,8 @@ function readyClause(ground: ClauseGround, clause: Clause, k: number): ReadyClau
       return kvarClause(ground, clause);
     case 'demand':
       return demandClause(ground, clause, path);
+    case 'contractedDemand':
+      return contractedClause(ground, clause);
     case 'percent': {
       const earlier = (ground.tariff.clauses ?? []).slice(0, k).map(({ name }) => name);
       return percentClause(ground, clause, earlier);

@@ -8,6 +8,7 @@ import { newMoney, unusedPapers } from './price-bank.js';
 import { settleBank, settleControl } from './settle-bank.js';
 import type { Site } from './site.js';
 import { studySite } from './study.js';
+import { onlyWay } from './weighed-bank.js';
 
 /**
  * Judges the site's own bank against the record, and prices it as new where the site gives a tariff.
@@ -36,6 +37,7 @@ export function assessBank(site: Site, record: LoadRecord, zone: ZoneTable, watc
       assumptions: [...assumptions, ...settled.assumptions, ...unusedPapers(site), ...(money?.assumptions ?? [])],
     },
     money: newMoney(study, site, money, bank),
+    priced: onlyWay(site, money, { bank, control: settled.control }),
   });
   watch?.report(1);
   return outcome;

@@ -108,7 +108,9 @@ export class BankCandidates {
   }
 
   #bank(layout: Layout, ratedV: number, reactorPct: number): Bank {
-    return bankOf(layout, { ratedV, reactorPct, reactorQuality: REACTOR_QUALITY, catalogue: this.#catalogue });
+    const { nominalV } = this.#judged.site;
+    const built = { ratedV, nominalV, reactorPct, reactorQuality: REACTOR_QUALITY, catalogue: this.#catalogue };
+    return bankOf(layout, built);
   }
 
   #totalKvar(bank: Bank): number {

@@ -101,6 +101,8 @@ function dependsOnTotals(clause: Clause, factor: FactorRule | undefined, held: H
         held.hasMaxKw &&
         (clause.scale === undefined || byEnergy)
       );
+    case 'contractedDemand':
+      return clause.basis === 'kW' && held.hasMaxKw;
     case 'percent':
       return byEnergy;
     case 'formula':

@@ -54,6 +54,7 @@ export function estimateOutcome(
     ...beside,
     robustness: null,
     reactorTrials: [],
+    spareWays: [],
     money: choice.money,
     verdict: graver(network, 'watch'),
     reasons: [
@@ -89,6 +90,7 @@ export function estimateOutcome(
     loadA: study.model.loadA,
     margins: marginMap(study.model, bank, levels, basisOf(study, control)),
     rival: rivalOf(study, choice, network),
+    priced: null,
   };
 }
 

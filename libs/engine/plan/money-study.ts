@@ -40,6 +40,9 @@ export function moneyStudy(study: Study, site: Site): MoneyStudy | null {
       ...tariffLines(site, prepared),
       ...(prices === null ? [] : absent.map((key) => financeLine(key, finance[key]))),
       ...priceLines(site),
+      // What every saving rests on.
+      remark('money.idealControl'),
+      remark('money.sameLoad'),
     ],
   };
 }

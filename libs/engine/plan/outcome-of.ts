@@ -13,6 +13,7 @@ import { reasons } from './reasons.js';
 import { copyNote, pointAssumption, reasonsBeside, verdictBeside } from './reasons-beside.js';
 import type { Result } from './result.js';
 import { type Operated, operate, type Study } from './study.js';
+import type { WaysWeighed } from './weighed-bank.js';
 
 /** What is said of a bank besides what its own figures say. */
 export interface Said {
@@ -31,6 +32,8 @@ export interface Choice extends BankChoice {
   operated?: Operated;
   /** what it costs and saves, from the bank simulated */
   money?: (operated: Operated) => Money;
+  /** what was weighed by its money */
+  priced?: WaysWeighed | undefined;
 }
 
 /**
@@ -60,6 +63,7 @@ export function outcomeOf(kind: Outcome['kind'], study: Study, choice: Choice): 
     ...beside,
     robustness: null,
     reactorTrials: [],
+    spareWays: [],
     money: choice.money?.(operated) ?? null,
     verdict: [said.atBest ?? 'clear', supported(study), verdictBeside(beside)].reduce(
       graver,
@@ -94,6 +98,7 @@ export function outcomeOf(kind: Outcome['kind'], study: Study, choice: Choice): 
     loadA: study.model.loadA,
     margins: marginMap(study.model, bank, levels, basisOf(study, control)),
     rival: rivalOf(study, choice, result.verdict),
+    priced: choice.priced === undefined ? null : { ...choice.priced, record: study.record, zone: study.zone },
   };
 }
 

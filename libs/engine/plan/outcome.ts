@@ -4,6 +4,7 @@ import type { LoadRecord } from '../record/load-record.js';
 import type { ZoneTable } from '../record/zone-table.js';
 import type { BankResult, Result } from './result.js';
 import type { SettledSite } from './settled-site.js';
+import type { PricedWays } from './weighed-bank.js';
 
 /** Columns of the simulated record, one entry a valid interval, length n. */
 export interface OperationSeries {
@@ -45,6 +46,8 @@ export interface BankOutcome {
   loadA: number;
   margins: MarginMap;
   rival: Rival | null;
+  /** what was weighed by its money, to be weighed again; null without a tariff or a bank */
+  priced: PricedWays | null;
 }
 
 /** Everything a page or a paper needs: the settled inputs, the result and the series behind it. */

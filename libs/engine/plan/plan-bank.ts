@@ -13,6 +13,7 @@ import { newMoney, unusedPapers } from './price-bank.js';
 import { settleBank, settleControl } from './settle-bank.js';
 import type { Site } from './site.js';
 import { meterWithConstant, type Study, studySite } from './study.js';
+import { onlyWay } from './weighed-bank.js';
 
 /**
  * Designs the bank that pays where the site gives a tariff, prices and sizes of stages; else the smallest bank that
@@ -67,6 +68,7 @@ function planByTarget(study: Study, site: Site, money: MoneyStudy | null, watch?
       atBest: chosen === null || chosen.shortOf !== null ? 'watch' : 'clear',
     },
     money: newMoney(study, site, money, chosen?.bank ?? null),
+    priced: onlyWay(site, money, chosen),
   });
 }
 

@@ -20,6 +20,7 @@ import { setPointsOf } from './set-points.js';
 import { settleBank, settleControl } from './settle-bank.js';
 import type { Site } from './site.js';
 import { type Operated, operate, type Study } from './study.js';
+import type { WeighedBank } from './weighed-bank.js';
 
 /** One of the ways that are weighed: nothing, today's bank, the new one. */
 interface Way {
@@ -82,6 +83,7 @@ export function planByMoney(study: Study, site: Site, money: MoneyStudy, watch?:
     control: chosen.control,
     isOwn: chosen.name === "keep today's bank",
     operated: chosen.operated,
+    priced: { site, ways: ways.map((way) => weighedOf(way, searchJudge.demandedFactor !== null)), chosen: chosen.name },
     money: () =>
       moneyOf(money, chosen.priced, {
         recommended: chosen.name,
@@ -166,11 +168,22 @@ function wayOf(study: Study, way: Omit<Way, 'npv' | 'targetMet' | 'verdict' | 'v
 function recommended(ways: readonly Way[], mustMeetTarget: boolean): Way {
   let chosen: Way | null = null;
   for (const way of ways) {
-    if (way.name !== 'new bank' && mustMeetTarget && !way.targetMet) continue;
-    if (way.name === "keep today's bank" && way.verdict === 'avoid') continue;
+    if (!mayBeRecommended(way, mustMeetTarget)) continue;
     if (chosen === null || way.npv > chosen.npv + NEAR_VALUE) chosen = way;
   }
   return chosen ?? ways[0]!;
+}
+
+function mayBeRecommended(way: Way, mustMeetTarget: boolean): boolean {
+  if (way.name === 'new bank') return true;
+  if (mustMeetTarget && !way.targetMet) return false;
+  return way.name === 'do nothing' || way.verdict !== 'avoid';
+}
+
+function weighedOf(way: Way, mustMeetTarget: boolean): WeighedBank {
+  const { name, bank, control, switchKind } = way;
+  const eligible = mayBeRecommended(way, mustMeetTarget);
+  return { name, bank, control, switchKind, isNew: name === 'new bank', eligible };
 }
 
 function alternativeOf(way: Way): Alternative {

@@ -2,6 +2,7 @@ import type { Bank } from '../layout/bank.js';
 import { effectiveKvar } from '../layout/stage.js';
 import { NO_WORTH, savingOf, type WorthBasis, worthOf } from '../money/bank-worth.js';
 import { type Bill, billYear } from '../money/bill.js';
+import { type ContractAdvice, contractAdvice } from '../money/contract-advice.js';
 import type { Alternative, Money, SearchProof, Worth } from '../money/money-result.js';
 import type { BankUse } from '../money/running-cost.js';
 import type { Saving } from '../money/saving.js';
@@ -49,6 +50,7 @@ export interface PricedBank {
 export interface Priced {
   after: Bill;
   saving: Saving;
+  contracts: ContractAdvice[];
   /** null without prices */
   worth: Worth | null;
 }
@@ -65,13 +67,15 @@ export function priceBank(study: Study, money: MoneyStudy, priced: PricedBank): 
   const { bank, operated } = priced;
   const months = money.prepared.calendar.months;
   // Nothing is the record as metered, whatever an old bank did while it was taken.
-  const after = billYear(money.prepared, bank === null ? study.record : operated.meter, false);
+  const meter = bank === null ? study.record : operated.meter;
+  const after = billYear(money.prepared, meter, false);
+  const contracts = contractAdvice(money.prepared, study.record, meter);
   const saving = savingOf(months, { before: money.before, after });
-  if (money.prices === null) return { after, saving, worth: null };
+  if (money.prices === null) return { after, saving, contracts, worth: null };
   const cost = { ...money.prices, switchKind: priced.switchKind };
   const basis: WorthBasis = { cost, finance: money.finance, months };
   const use = bank === null ? null : usageOf(study, bank, operated.run);
-  return { after, saving, worth: worthOf(bank, saving, use, { ...basis, isNew: priced.isNew }) };
+  return { after, saving, contracts, worth: worthOf(bank, saving, use, { ...basis, isNew: priced.isNew }) };
 }
 
 /** What is said of a choice besides its own money. */
@@ -100,6 +104,9 @@ export function moneyOf(money: MoneyStudy, priced: Priced, choice: MoneyChoice):
     monthsFilled: priced.saving.monthsFilled,
     alternatives: choice.alternatives,
     proof: choice.proof,
+    contracts: priced.contracts,
+    savingRange: null,
+    robustness: null,
     ...(priced.worth ?? NO_WORTH),
   };
 }

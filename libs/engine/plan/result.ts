@@ -17,6 +17,7 @@ import type { RequirementSummary } from '../requirement/requirement.js';
 import type { Figure } from './figure.js';
 import type { ReactorTrial } from './reactor-choice.js';
 import type { Robustness } from './robustness.js';
+import type { SpareWays } from './spare-ways.js';
 
 /** What is said of a bank on its network, whatever the load is known from. */
 export interface BankResult {
@@ -39,6 +40,8 @@ export interface BankResult {
   robustness: Robustness | null;
   /** the bank's stages with the customary reactor ratios; empty where its groups differ in theirs, and until asked for */
   reactorTrials: ReactorTrial[];
+  /** what more stages of the largest kind need; empty for an empty bank, and until it is asked for */
+  spareWays: SpareWays[];
   verdict: Verdict;
   reasons: Remark[];
   assumptions: Remark[];

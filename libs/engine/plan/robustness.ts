@@ -5,6 +5,7 @@ import type { Bank } from '../layout/bank.js';
 import type { Loads } from '../network/loads.js';
 import { siteNetwork } from '../network/network-model.js';
 import type { Control } from '../operation/control.js';
+import { changeTowards } from './change-towards.js';
 import { basisOf, type Judged, overallVerdict } from './judge-basis.js';
 import type { SettledSite } from './settled-site.js';
 
@@ -68,14 +69,14 @@ export function robustness(study: Judged, bank: Bank, control: Control): Robustn
       const verdictAt = (factor: number): Verdict =>
         overallVerdict(study, judgeMoved(study, bank, control, { quantity, factor }));
       const [leastTried, mostTried] = TRIED[quantity];
-      const down = changeTowards(verdictAt, present, leastTried);
-      const up = changeTowards(verdictAt, present, mostTried);
+      const down = changeTowards(verdictAt, present, { end: leastTried, steps: STEPS, closedIn: CLOSED_IN });
+      const up = changeTowards(verdictAt, present, { end: mostTried, steps: STEPS, closedIn: CLOSED_IN });
       return {
         quantity,
         lowFactor: down?.factor ?? null,
         highFactor: up?.factor ?? null,
-        verdictBelow: down?.verdict ?? null,
-        verdictAbove: up?.verdict ?? null,
+        verdictBelow: down?.value ?? null,
+        verdictAbove: up?.value ?? null,
         leastTried,
         mostTried,
       };
@@ -88,31 +89,16 @@ function applies(site: SettledSite, quantity: MovedQuantity): boolean {
   return quantity !== 'background' || (site.loads.backgroundPct ?? []).length > 0;
 }
 
-function changeTowards(
-  verdictAt: (factor: number) => Verdict,
-  present: Verdict,
-  end: number,
-): { factor: number; verdict: Verdict } | null {
-  let same = 1;
-  for (let step = 1; step <= STEPS; step++) {
-    const next = end > 0 ? end ** (step / STEPS) : 1 - step / STEPS;
-    if (verdictAt(next) === present) {
-      same = next;
-      continue;
-    }
-    let other = next;
-    while (Math.abs(other - same) > CLOSED_IN * Math.max(same, other)) {
-      const middle = (same + other) / 2;
-      if (verdictAt(middle) === present) same = middle;
-      else other = middle;
-    }
-    return { factor: other, verdict: verdictAt(other) };
-  }
-  return null;
-}
-
-// The bank judged with one quantity moved; the record itself is not simulated again, since duties rest on the network.
-function judgeMoved(
+/**
+ * The bank judged with one quantity moved; the record itself is not simulated again, since duties rest on the network.
+ * @param study site and network
+ * @param bank the bank
+ * @param control settings
+ * @param moved what is moved, by which factor
+ * @returns the judgement
+ * @source method-robustness
+ */
+export function judgeMoved(
   study: Judged,
   bank: Bank,
   control: Control,
@@ -166,12 +152,22 @@ export function withCapacitance(bank: Bank, factor: number): Bank {
   };
 }
 
-function stageOut(study: Judged, bank: Bank, control: Control, g: number): StageOut {
+/**
+ * A bank without one stage of a group.
+ * @param bank the bank
+ * @param g index of the group
+ * @returns what is left, its group gone where it had one stage
+ */
+export function withoutStage(bank: Bank, g: number): Bank {
   const groups = bank.groups.flatMap((group, k) => {
     if (k !== g) return [group];
     return group.count > 1 ? [{ ...group, count: group.count - 1 }] : [];
   });
-  const rest = { ...bank, groups };
+  return { ...bank, groups };
+}
+
+function stageOut(study: Judged, bank: Bank, control: Control, g: number): StageOut {
+  const rest = withoutStage(bank, g);
   const judged = firmVerdict(study.model, rest, basisOf(study, control));
   return {
     group: g,

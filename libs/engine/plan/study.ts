@@ -101,12 +101,17 @@ export interface Operated extends Simulated {
  * @param study site and record
  * @param bank the bank
  * @param control settings
+ * @param view what the controller sees, length n; the interval's own averages where absent
  * @returns columns and monthly energies at the meter
  * @source method-controller
  */
-export function operate(study: Study, bank: Bank, control: Control): Operated {
+export function operate(
+  study: Study,
+  bank: Bank,
+  control: Control,
+  view = controllerView(study, control.setPointPowerFactor),
+): Operated {
   const { record, load } = study;
-  const view = controllerView(study, control.setPointPowerFactor);
   const run = simulate(switchedBank(bank, study.site.nominalV), control, view);
   const deliveredKvar = atVoltage(run.connectedKvar, study.voltageScale);
   const meter = meterAfter(record, load, deliveredKvar);

@@ -1,17 +1,27 @@
 import { couplesAtPrimary } from '../duty/limits-point.js';
 import { COMMON_CATALOGUE } from '../layout/candidates.js';
+import type { CostBasis } from '../money/capital.js';
+import type { Money } from '../money/money-result.js';
 import { siteNetwork } from '../network/network-model.js';
 import { Stopped, type Watch } from '../problem.js';
 import { withEffects } from './effects.js';
 import type { Judged } from './judge-basis.js';
+import { withMoneyEffects } from './money-effects.js';
+import { MoneyMover, type WeighedWays } from './money-mover.js';
+import { moneyRobustness } from './money-robustness.js';
+import { moneyStudy } from './money-study.js';
 import type { BankOutcome } from './outcome.js';
 import { reactorTrials } from './reactor-choice.js';
+import type { BankResult } from './result.js';
 import { robustness } from './robustness.js';
+import { spareWays } from './spare-ways.js';
+import { studySite } from './study.js';
+import { scaleOf } from './weigh-again.js';
 
 /**
  * The same outcome with what says how firm it is: ranges in which the verdict stands, one stage out, the effect of each
- * assumption, and the customary reactor ratios side by side. Some sixty judgements: apart, so that a bank under the
- * hand needn't wait for them.
+ * assumption, the customary reactor ratios side by side, room for more stages, and how firm the money is. Some sixty
+ * judgements: apart, so that a bank under the hand needn't wait for them.
  * @param outcome a bank planned or judged
  * @param watch progress and stopping
  * @returns a new outcome; its bank, verdict and figures are unchanged
@@ -20,7 +30,8 @@ import { robustness } from './robustness.js';
  */
 export function withRobustness<T extends BankOutcome>(outcome: T, watch?: Watch): T {
   const { site, bank, result } = outcome;
-  if (bank.groups.length === 0) return outcome;
+  const weighed = weighedWays(outcome);
+  if (bank.groups.length === 0) return withMoney(outcome, weighed);
   const { supply, loads, nominalV, topology } = site;
   const judged: Judged = {
     site,
@@ -35,6 +46,41 @@ export function withRobustness<T extends BankOutcome>(outcome: T, watch?: Watch)
   const assumptions = withEffects(result.assumptions, judged, bank, result.control);
   step(0.8);
   const trials = reactorTrials(judged, bank, result.control, COMMON_CATALOGUE.ratedV);
+  const more = spareWays(judged, bank, result.control, costOf(weighed));
   step(1);
-  return { ...outcome, result: { ...result, robustness: ranges, assumptions, reactorTrials: trials } };
+  const firm = {
+    ...outcome,
+    result: { ...result, robustness: ranges, assumptions, reactorTrials: trials, spareWays: more },
+  };
+  return withMoney(firm, weighed);
+}
+
+function costOf(weighed: WeighedWays | null): CostBasis | null {
+  const way = weighed?.ways.find(({ name }) => name === weighed.chosen);
+  const prices = weighed?.scale.money.prices ?? null;
+  return prices && { ...prices, switchKind: way?.switchKind ?? null };
+}
+
+// An estimate has bills of its own, and nothing that was weighed.
+function isPriced(result: BankResult): result is BankResult & { money: Money } {
+  return 'money' in result && result.money !== null;
+}
+
+function weighedWays({ priced }: BankOutcome): WeighedWays | null {
+  if (priced === null) return null;
+  const study = studySite(priced.site, priced.record, priced.zone);
+  const money = moneyStudy(study, priced.site);
+  return money && { scale: scaleOf(study, money), ways: priced.ways, chosen: priced.chosen };
+}
+
+function withMoney<T extends BankOutcome>(outcome: T, weighed: WeighedWays | null): T {
+  const { result } = outcome;
+  if (weighed === null || !isPriced(result)) return outcome;
+  const mover = new MoneyMover(weighed);
+  const table = moneyRobustness(weighed, mover);
+  const savingRange = table.ways.find(({ name }) => name === weighed.chosen)?.saving ?? null;
+  const money = { ...result.money, savingRange, robustness: table.ways.length === 0 ? null : table };
+  const assumptions =
+    savingRange === null ? result.assumptions : withMoneyEffects(result.assumptions, weighed, mover, savingRange);
+  return { ...outcome, result: { ...result, money, assumptions } };
 }

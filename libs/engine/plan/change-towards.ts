@@ -1,0 +1,40 @@
+/** How a change is looked for. */
+export interface ChangeSearch {
+  /** the factor to stop at; 0 is reached in even steps, any other end in even steps of the logarithm */
+  end: number;
+  /** steps before it is closed in on */
+  steps: number;
+  /** a change is closed in on to this share */
+  closedIn: number;
+}
+
+/**
+ * The change nearest to a factor of 1: looked for outwards step by step, and closed in on by bisection.
+ * @param valueAt what holds at a factor
+ * @param present what holds at 1
+ * @param search how far and how finely
+ * @returns the factor just beyond the change and what holds there, or null where nothing changes
+ * @source method-robustness
+ */
+export function changeTowards<T>(
+  valueAt: (factor: number) => T,
+  present: T,
+  { end, steps, closedIn }: ChangeSearch,
+): { factor: number; value: T } | null {
+  let same = 1;
+  for (let step = 1; step <= steps; step++) {
+    const next = end > 0 ? end ** (step / steps) : 1 - step / steps;
+    if (valueAt(next) === present) {
+      same = next;
+      continue;
+    }
+    let other = next;
+    while (Math.abs(other - same) > closedIn * Math.max(same, other)) {
+      const middle = (same + other) / 2;
+      if (valueAt(middle) === present) same = middle;
+      else other = middle;
+    }
+    return { factor: other, value: valueAt(other) };
+  }
+  return null;
+}
