@@ -90,6 +90,8 @@ function placedRows(
   const bounds = { first: kept[0]!, last: kept[kept.length - 1]!, intervalS };
   const because = showsEnds(rows, first.moments, bounds);
   if (because === null) return { ...first, ends: false, because };
+  // an interval's end is read otherwise than its beginning where a clock changes only
+  if (first.moments.zone.offsetS.length === 1) return { ...first, ends: true, because };
   return { ...placed(true), ends: true, because };
 }
 

@@ -176,7 +176,7 @@ function split(signed: Float64Array, lagging: Float64Array, leading: Float64Arra
     const value = signed[i]!;
     if (value < 0) negative++;
     const kvar = leadingPositive ? -value : value;
-    lagging[i] = kvar > 0 ? kvar : 0;
+    lagging[i] = Math.max(kvar, 0);
     // most records lead seldom or never: memory that nobody writes to is not taken up
     if (kvar < 0) leading[i] = -kvar;
   }
