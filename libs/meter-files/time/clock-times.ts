@@ -27,16 +27,6 @@ export function clockTimes(rows: StampedRows, order: DateOrder): Float64Array {
   return clock;
 }
 
-/**
- * The clock time of one row as it is written, in seconds since 1970-01-01 00:00 by the same clock.
- * @param rows stamps in parts
- * @param index of the row
- * @param order of the parts of a date
- */
-export function clockTimeOf(rows: StampedRows, index: number, order: DateOrder): number {
-  return DAY_S * dayOf(rows, index, order) + rows.clockS[index]!;
-}
-
 function dayOf(rows: StampedRows, index: number, order: DateOrder): number {
   const parts = datePartsOf(rows.dateKey[index]!, rows.dateForm!, order);
   if (parts !== null && isDate(parts)) return dayNumber(parts.year, parts.month, parts.day);

@@ -1,7 +1,7 @@
 import { zoneTable } from '#libs/contract/time-zone.js';
-import { InputProblem, type Remark, UTC_TABLE, type ZoneTable } from '#libs/engine/index.js';
+import { InputProblem, offsetAtS, type Remark, UTC_TABLE, type ZoneTable } from '#libs/engine/index.js';
 import { note } from '../note.js';
-import { clockTimeOf, clockTimes, orderRows } from './clock-times.js';
+import { clockTimes, orderRows } from './clock-times.js';
 import { describeDate } from './date-orders.js';
 import { elapsedMoments } from './elapsed-days.js';
 import { localToUtc } from './local-times.js';
@@ -27,7 +27,7 @@ export interface StampRules {
 export interface Moments {
   /** UTC, one a row; NaN where the zone's clock never showed the time [s] */
   utcS: Float64Array;
-  /** time of a row as written [s] */
+  /** time of a row by its clock, midnights that were moved under the day they begin [s] */
   clockAt: (row: number) => number;
   /** rows stand newest first */
   newestFirst: boolean;
@@ -45,15 +45,15 @@ export interface Moments {
  */
 export function momentsOf(rows: StampedRows, rules: StampRules, ends: boolean): Moments {
   const clock = clockTimes(rows, rules.order);
-  const clockAt = (row: number) => clockTimeOf(rows, row, rules.order);
-  if (rows.offsetS !== null) return ownMoments(clock, rows.offsetS, clockAt);
+  if (rows.offsetS !== null) return ownMoments(clock, rows.offsetS);
   const zone = zoneOver(rules.zone ?? 'UTC', clock);
   const notes: Remark[] = [];
   if (rules.zone === null) notes.push(note('zone-assumed-utc', {}));
   else if (rules.zoneFromHeader) notes.push(note('zone-from-header', { zone: rules.zone }));
   if (rules.elapsed) {
     const passedS = rows.clockS.subarray(0, rows.count);
-    return { utcS: elapsedMoments(clock, passedS, zone), clockAt, newestFirst: false, zone, notes };
+    const utcS = elapsedMoments(clock, passedS, zone);
+    return { utcS, clockAt: clockIn(utcS, zone), newestFirst: false, zone, notes };
   }
   const { newestFirst, movedMidnights } = orderRows(clock, rows, rules.mark !== 'begin');
   const { utcS, doubledRows, onceRows } = localToUtc(clock, newestFirst, zone, ends || movedMidnights > 0);
@@ -61,11 +61,16 @@ export function momentsOf(rows: StampedRows, rules: StampRules, ends: boolean): 
   if (movedMidnights > 0) notes.push(note('midnight-under-ending-day', { rows: movedMidnights }));
   if (doubledRows > 0) notes.push(note('doubled-hour-by-order', { rows: doubledRows }));
   if (onceRows > 0) notes.push(note('doubled-hour-once', { rows: onceRows }));
-  return { utcS, clockAt, newestFirst, zone, notes };
+  return { utcS, clockAt: clockIn(utcS, zone), newestFirst, zone, notes };
 }
 
-function ownMoments(utcS: Float64Array, offsetS: Int32Array, clockAt: Moments['clockAt']): Moments {
+function clockIn(utcS: Float64Array, zone: ZoneTable): Moments['clockAt'] {
+  return (row) => utcS[row]! + offsetAtS(zone, utcS[row]!);
+}
+
+function ownMoments(utcS: Float64Array, offsetS: Int32Array): Moments {
   for (let i = 0; i < utcS.length; i++) utcS[i]! -= offsetS[i]!;
+  const clockAt = (row: number) => utcS[row]! + offsetS[row]!;
   return { utcS, clockAt, newestFirst: false, zone: UTC_TABLE, notes: [] };
 }
 
