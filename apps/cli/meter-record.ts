@@ -1,4 +1,4 @@
-import { readMeterMap } from '#libs/contract/meter-map-schema.js';
+import type { MeterMap } from '#libs/contract/meter-map.js';
 import { isTimeZone } from '#libs/contract/time-zone.js';
 import { InputProblem } from '#libs/engine/index.js';
 import { FORMATS } from '#libs/meter-files/formats.js';
@@ -22,8 +22,7 @@ import { inFile } from './refused-file.js';
 export async function readMeterRecord(line: CommandLine, path: string, siteTimeZone?: string): Promise<MeterReading> {
   checkOptions(line);
   const mapPath = line.values.get('map');
-  const map =
-    mapPath === undefined ? undefined : await inFile(mapPath, async () => readMeterMap(await readJson(mapPath)));
+  const map = mapPath === undefined ? undefined : await inFile(mapPath, () => mapIn(mapPath));
   const timeZone = line.values.get('time-zone');
   const options: ReadOptions = {
     ...present('format', line.values.get('format')),
@@ -42,6 +41,12 @@ export async function readMeterRecord(line: CommandLine, path: string, siteTimeZ
     reading = extended;
   }
   return reading;
+}
+
+/** The checks of a map are loaded where there is one: they take up more memory than the rest of the reader. */
+async function mapIn(path: string): Promise<MeterMap> {
+  const { readMeterMap } = await import('#libs/contract/meter-map-schema.js');
+  return readMeterMap(await readJson(path));
 }
 
 function readOne(path: string, options: ReadOptions): Promise<MeterReading> {

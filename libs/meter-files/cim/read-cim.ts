@@ -78,7 +78,7 @@ class LocalStamps {
     }
     const table = zoneTable(this.#zone ?? 'UTC', leastS - 2 * DAY_S, mostS + 2 * DAY_S);
     const newestFirst = clock[0]! > clock[clock.length - 1]!;
-    const { utcS, doubledRows, onceRows } = localToUtc(clock, newestFirst, table, how.ends);
+    const { utcS, doubledRows, onceRows } = localToUtc(clock.slice(), newestFirst, table, how.ends);
     const skipped = utcS.findIndex((at) => Number.isNaN(at));
     // an interval that begins as the clock is put forward is let stand by its end
     if (skipped >= 0 && how.ends) {

@@ -22,7 +22,11 @@ export function readUnder(file: CsvFile, meaning: CsvMeaning, only = false): Rea
   const { missing, estimated, unknown } = reader.qualities.byMeaning(meaning.quality);
   const raw = rawColumns(file, meaning, missing);
   const rules = stampRules(file, meaning);
-  const placed = placedRows(file, rules, { values: raw.map(({ values }) => values), keep: meaning.keep });
+  const placed = placedRows(file, rules, {
+    values: raw.map(({ values }) => values),
+    keep: meaning.keep,
+    only,
+  });
   const { moments, grid, ends, because, skipped } = placed;
   const { rowNumber } = reader.rows;
   const found = csvSources(raw, meaning, { grid, utcS: moments.utcS, rowNumber, ends, only });
@@ -75,13 +79,16 @@ interface Placed {
 function placedRows(
   { reader }: CsvFile,
   rules: StampRules,
-  { values, keep }: { values: Float64Array[]; keep: 'first' | 'last' | undefined },
+  { values, keep, only }: { values: Float64Array[]; keep: 'first' | 'last' | undefined; only: boolean },
 ): Placed {
   const { rows } = reader;
   const placed = (ends: boolean) => {
     const moments = momentsOf(rows, rules, ends);
     const skipped = skippedRows(rows, moments, (row) => values.some((column) => !Number.isNaN(column[row]!)));
-    const moment = { utcS: moments.utcS, rowNumber: rows.rowNumber, values, spanS: rows.spanS };
+    // dates are not looked at again where the rows are placed once
+    const once = only && (rules.mark !== null || moments.zone.offsetS.length === 1);
+    const spare = once ? rows.dateKey : undefined;
+    const moment = { utcS: moments.utcS, rowNumber: rows.rowNumber, values, spanS: rows.spanS, spare };
     return { moments, skipped, grid: gridRows(moment, keep) };
   };
   const first = placed(rules.mark === 'end');
@@ -90,6 +97,8 @@ function placedRows(
   const bounds = { first: kept[0]!, last: kept[kept.length - 1]!, intervalS };
   const because = showsEnds(rows, first.moments, bounds);
   if (because === null) return { ...first, ends: false, because };
+  // an interval's end is read otherwise than its beginning where a clock changes only
+  if (first.moments.zone.offsetS.length === 1) return { ...first, ends: true, because };
   return { ...placed(true), ends: true, because };
 }
 

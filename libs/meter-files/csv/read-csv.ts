@@ -1,4 +1,4 @@
-import { Question } from '#libs/contract/question.js';
+import { Question, type QuestionReading } from '#libs/contract/question.js';
 import { InputProblem, type Remark } from '#libs/engine/index.js';
 import type { MeterBytes } from '../meter-bytes.js';
 import type { MeterReading, ReadOptions } from '../meter-format.js';
@@ -77,11 +77,13 @@ function refuseEmpty(): never {
 
 /** A reading for each meter; a meter that can't be read as the file stands has none. */
 function askWhichMeter(file: Omit<CsvFile, 'reader'>, readers: Map<string, RowReader>, meters: number): never {
-  const found = [...readers].map(([meter, reader]) => ({ meter, result: firstReading({ ...file, reader }) }));
-  const readings = found.flatMap(({ meter, result }) =>
-    result instanceof InputProblem ? [] : [shownReading({ meter }, result.columns)],
-  );
-  const [failed] = found.flatMap(({ result }) => (result instanceof InputProblem ? [result] : []));
+  const readings: QuestionReading[] = [];
+  let failed: InputProblem | undefined;
+  for (const [meter, reader] of readers) {
+    const result = firstReading({ ...file, reader });
+    if (result instanceof InputProblem) failed ??= result;
+    else readings.push(shownReading({ meter }, result.columns));
+  }
   if (readings.length === 0) throw failed!;
   throw new Question([{ id: 'meter', about: `which of the ${meters} meters in the file is read`, readings }]);
 }

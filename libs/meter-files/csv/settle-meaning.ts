@@ -4,7 +4,7 @@ import { InputProblem, type Remark } from '#libs/engine/index.js';
 import { note } from '../note.js';
 import type { ReadResult } from '../record/close-reading.js';
 import { ConflictingRows } from '../record/interval-grid.js';
-import { sameColumns, shownReading } from '../record/reading-shown.js';
+import { columnsPrint, shownReading } from '../record/reading-shown.js';
 import { dateOrders } from '../time/date-orders.js';
 import type { CsvFile, CsvMeaning } from './csv-meaning.js';
 import { readUnder } from './csv-reading.js';
@@ -16,9 +16,12 @@ type OpenPoints = { [Point in keyof CsvMeaning]: CsvMeaning[Point][] };
 
 type Point = keyof OpenPoints;
 
+/** What is kept of a reading under one of several meanings: its columns would take up as much memory as the file's own. */
 interface Attempt {
   meaning: CsvMeaning;
-  result: ReadResult;
+  shown: QuestionReading;
+  /** equal where two readings make one record */
+  print: string;
 }
 
 /**
@@ -118,12 +121,20 @@ function factorSigns({ layout, reader, map }: CsvFile): PowerFactorSign[] {
 }
 
 function settledAmong(file: CsvFile, points: OpenPoints): ReadResult {
+  const all = meanings(points);
+  const meaning = all.length === 1 ? all[0]! : settledMeaning(file, points, all);
+  // no other is looked at any more
+  const result = readUnder(file, meaning, true);
+  return { ...result, notes: [...settledNotes(file, points, meaning), ...result.notes] };
+}
+
+/** The first meaning that can be, where the others that can be make the same record; each is read by itself. */
+function settledMeaning(file: CsvFile, points: OpenPoints, all: readonly CsvMeaning[]): CsvMeaning {
   const attempts: Attempt[] = [];
   let failure: unknown;
-  const all = meanings(points);
   for (const meaning of all) {
     try {
-      attempts.push({ meaning, result: readUnder(file, meaning, all.length === 1) });
+      attempts.push(attemptUnder(file, meaning));
     } catch (problem) {
       if (!(problem instanceof InputProblem)) throw problem;
       failure ??= problem;
@@ -133,7 +144,12 @@ function settledAmong(file: CsvFile, points: OpenPoints): ReadResult {
   if (first === undefined) throw failure;
   const questions = (Object.keys(points) as Point[]).flatMap((point) => asked(point, attempts));
   if (questions.length > 0) throw new Question(questions);
-  return { ...first.result, notes: [...settledNotes(file, points, first.meaning), ...first.result.notes] };
+  return first.meaning;
+}
+
+function attemptUnder(file: CsvFile, meaning: CsvMeaning): Attempt {
+  const { columns } = readUnder(file, meaning);
+  return { meaning, shown: shownReading({}, columns), print: columnsPrint(columns) };
 }
 
 function meanings(points: OpenPoints): CsvMeaning[] {
@@ -151,12 +167,10 @@ function asked(point: Point, attempts: Attempt[]): QuestionAsked[] {
   const beside = attempts.filter(({ meaning }) => others.every((other) => meaning[other] === first!.meaning[other]));
   const distinct: Attempt[] = [];
   for (const attempt of beside) {
-    if (!distinct.some(({ result }) => sameColumns(result.columns, attempt.result.columns))) distinct.push(attempt);
+    if (!distinct.some(({ print }) => print === attempt.print)) distinct.push(attempt);
   }
   if (distinct.length < 2) return [];
-  const readings: QuestionReading[] = distinct.map(({ meaning, result }) =>
-    shownReading(mapOf(point, meaning), result.columns),
-  );
+  const readings: QuestionReading[] = distinct.map(({ meaning, shown }) => ({ ...shown, map: mapOf(point, meaning) }));
   const { id, about } = ASKED[point];
   return [{ id, about, readings }];
 }

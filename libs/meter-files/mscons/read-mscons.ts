@@ -96,7 +96,7 @@ function toUtc({ channel }: MessageChannel, zone: string): void {
     if (timeS < low) low = timeS;
     if (timeS > high) high = timeS;
   }
-  channel.beginS.set(localToUtc(clock, false, zoneTable(zone, low - 2 * DAY_S, high + 2 * DAY_S), false).utcS);
+  localToUtc(clock, false, zoneTable(zone, low - 2 * DAY_S, high + 2 * DAY_S), false);
 }
 
 /** Checks the counts that messages carry of themselves: a segment or a message that is missing shows there. */

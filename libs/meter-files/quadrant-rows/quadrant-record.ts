@@ -100,7 +100,7 @@ function placedRows(
     ...(movedMidnights > 0 ? [note('midnight-under-ending-day', { rows: movedMidnights })] : []),
   ];
   const { utcS, table } = seasonTimes({ clock, summer: values[FLAG]!, rowNumber }, zone);
-  const moments: Moments = { utcS, clock, newestFirst, zone: table, notes };
+  const moments: Moments = { utcS, clockAt: (row) => clock[row]!, newestFirst, zone: table, notes };
   const energies = values.slice(0, FLAG);
   const grid = gridRows({ utcS, rowNumber, values: energies, spanS: Number.NaN }, keep);
   const bounds = { first: grid.kept[0]!, last: grid.kept.at(-1)!, intervalS: grid.intervalS };

@@ -80,18 +80,15 @@ export function buildColumns(
   const valid = validRows(rows.kept, sources);
   refuseNegative(rows, valid, sources);
   const n = valid.length;
-  const of = (quantity: Quantity) =>
-    taken(
-      rows,
-      valid,
-      sources.find((source) => source.quantity === quantity),
-    );
+  const sourceOf = (quantity: Quantity) => sources.find((source) => source.quantity === quantity);
+  const of = (quantity: Quantity) => taken(rows, valid, sourceOf(quantity));
   const exported = of('exported');
   const imported = of('active') ?? new Float64Array(n);
   if (exported !== null) for (let i = 0; i < n; i++) exported[i] = imported[i]! - exported[i]!;
   const activeKw = exported ?? imported;
   const signed = of('reactive');
-  const lagging = (signed === null ? of('lagging') : null) ?? new Float64Array(n);
+  const isSpare = signed !== null && isOwn(signed, sourceOf('reactive')!);
+  const lagging = isSpare ? signed : ((signed === null ? of('lagging') : null) ?? new Float64Array(n));
   const leading = (signed === null ? of('leading') : null) ?? new Float64Array(n);
   const negativeReactive = signed === null ? 0 : split(signed, lagging, leading, leadingPositive);
   const standby = of('standby');
@@ -156,26 +153,32 @@ function taken(rows: OrderedRows, valid: Int32Array, source: QuantitySource | un
   const { values, times, over, energy, quantity } = source;
   const { intervalS } = rows;
   const whole = picked(values, valid);
+  const own = isOwn(whole, source);
   // what is exported is written to
-  const isOwn = whole !== values || source.spare === true;
-  if (times === 1 && over === 1 && !energy && (isOwn || quantity !== 'exported')) return whole;
+  if (times === 1 && over === 1 && !energy && (own || quantity !== 'exported')) return whole;
   // kW = kWh · 3600 ÷ intervalS
   const hourS = energy ? 3600 : 1;
   const lengthS = energy ? intervalS : 1;
-  const column = isOwn ? whole : new Float64Array(valid.length);
+  const column = own ? whole : new Float64Array(valid.length);
   for (let i = 0; i < column.length; i++) column[i] = (((whole[i]! * times) / over) * hourS) / lengthS;
   return column;
 }
 
-/** lagging = max(Q, 0), leading = max(−Q, 0), both 0 where they come in */
+/** Whether a column belongs to the record alone, so that it may be written to. */
+function isOwn(column: Float64Array, { values, spare }: QuantitySource): boolean {
+  return column !== values || spare === true;
+}
+
+/** lagging = max(Q, 0), which may be the signed column itself; leading = max(−Q, 0), 0 where it comes in */
 function split(signed: Float64Array, lagging: Float64Array, leading: Float64Array, leadingPositive: boolean): number {
   let negative = 0;
   for (let i = 0; i < signed.length; i++) {
     const value = signed[i]!;
     if (value < 0) negative++;
     const kvar = leadingPositive ? -value : value;
-    if (kvar > 0) lagging[i] = kvar;
-    else if (kvar < 0) leading[i] = -kvar;
+    lagging[i] = Math.max(kvar, 0);
+    // most records lead seldom or never: memory that nobody writes to is not taken up
+    if (kvar < 0) leading[i] = -kvar;
   }
   return negative;
 }

@@ -10,6 +10,8 @@ export interface MomentRows {
   values: readonly Float64Array[];
   /** length of the interval where the file states it [s]; NaN where it has to be found */
   spanS: number;
+  /** room that nobody needs any more, for the order of the rows */
+  spare?: Int32Array | undefined;
 }
 
 /** The rows of a record in time order, one a moment. */
@@ -53,7 +55,8 @@ export class ConflictingRows extends InputProblem {
  */
 export function gridRows(rows: MomentRows, keep: 'first' | 'last' | undefined): IntervalGrid {
   if (isRegular(rows.utcS, rows.spanS)) {
-    const kept = new Int32Array(rows.utcS.length);
+    const n = rows.utcS.length;
+    const kept = rows.spare?.subarray(0, n) ?? new Int32Array(n);
     for (let i = 0; i < kept.length; i++) kept[i] = i;
     return { intervalS: rows.utcS[1]! - rows.utcS[0]!, kept, duplicates: 0, overruled: 0, misplaced: 0 };
   }

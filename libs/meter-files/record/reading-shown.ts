@@ -1,3 +1,4 @@
+import { createHash } from 'node:crypto';
 import type { MeterMap } from '#libs/contract/meter-map.js';
 import type { QuestionReading } from '#libs/contract/question.js';
 import type { RecordColumns } from './build-columns.js';
@@ -58,4 +59,28 @@ function same(a: Float64Array | Uint8Array | null, b: Float64Array | Uint8Array 
   if (a.length !== b.length) return false;
   for (let i = 0; i < a.length; i++) if (a[i] !== b[i]) return false;
   return true;
+}
+
+const PRINTED_AT_ONCE = 8192;
+
+/**
+ * A print of a reading's columns, equal where two readings make one record and as good as never elsewhere.
+ * @param columns of the reading
+ */
+export function columnsPrint(columns: RecordColumns): string {
+  const hash = createHash('sha256');
+  const { intervalS, beginS, activeKw, laggingKvar, leadingKvar, voltageV, connectedKvar, standby } = columns;
+  hash.update(`${intervalS}`);
+  const part = new Float64Array(PRINTED_AT_ONCE);
+  for (const column of [beginS, activeKw, laggingKvar, leadingKvar, voltageV, connectedKvar, standby]) {
+    hash.update(column === null ? 'none' : `${column.length}`);
+    if (column === null) continue;
+    for (let from = 0; from < column.length; from += PRINTED_AT_ONCE) {
+      const count = Math.min(PRINTED_AT_ONCE, column.length - from);
+      // adding 0 makes 0 of −0, which is the same number
+      for (let i = 0; i < count; i++) part[i] = column[from + i]! + 0;
+      hash.update(part.subarray(0, count));
+    }
+  }
+  return hash.digest('hex');
 }

@@ -19,24 +19,25 @@ interface Change {
   /** clock times from `lowS` up to `highS` happen twice, or never [s] */
   lowS: number;
   highS: number;
-  /** rows that fall into a doubled hour, in file order */
+  /** rows that fall into a doubled hour, in file order, and their clock times [s] */
   rows: number[];
+  localS: number[];
 }
 
 /**
- * Turns the clock times of a file into UTC.
+ * Turns the clock times of a file into UTC, in place: a second column of times is memory that nobody needs.
  * In a doubled hour the rows count by file order: what stands before the clock's step back is the first pass, what stands
  * behind it the second; where the two passes alternate, the first row of a pair is the first.
- * @param clock times as written [s]
+ * @param clock times as written [s]; written to
  * @param newestFirst whether the file runs backwards
  * @param table the zone's offsets, over the whole span
  * @param ends whether the stamps mark the ends of intervals: the moment of a change may then be written either way
- * @returns times in UTC, aligned with `clock`; the same array where clocks show UTC
+ * @returns times in UTC, in the array of `clock`
  */
 export function localToUtc(clock: Float64Array, newestFirst: boolean, table: ZoneTable, ends: boolean): UtcTimes {
   const changes = changesOf(table);
   if (changes.length === 0) return { utcS: shifted(clock, table.offsetS[0]!), doubledRows: 0, onceRows: 0 };
-  const result: UtcTimes = { utcS: new Float64Array(clock.length), doubledRows: 0, onceRows: 0 };
+  const result: UtcTimes = { utcS: clock, doubledRows: 0, onceRows: 0 };
   const n = clock.length;
   let clear = clearTimes(changes, table, Number.NEGATIVE_INFINITY);
   for (let i = 0; i < n; i++) {
@@ -47,12 +48,13 @@ export function localToUtc(clock: Float64Array, newestFirst: boolean, table: Zon
     const near = changeAt(clear, localS);
     result.utcS[row] = near === undefined ? plainS : nearChange(near, row, { localS, plainS, ends });
   }
-  for (const change of changes) if (change.rows.length > 0) tellApart(change, clock, result);
+  for (const change of changes) if (change.rows.length > 0) tellApart(change, result);
   return result;
 }
 
 function shifted(clock: Float64Array, offsetS: number): Float64Array {
-  return offsetS === 0 ? clock : clock.map((localS) => localS - offsetS);
+  if (offsetS !== 0) for (let row = 0; row < clock.length; row++) clock[row]! -= offsetS;
+  return clock;
 }
 
 /** Clock times between two changes, clear of both: they need no thought. */
@@ -92,7 +94,7 @@ function changesOf(table: ZoneTable): Change[] {
     const beforeS = table.offsetS[k - 1]!;
     const afterS = table.offsetS[k]!;
     const lowS = atS + Math.min(beforeS, afterS);
-    changes.push({ atS, beforeS, afterS, lowS, highS: atS + Math.max(beforeS, afterS), rows: [] });
+    changes.push({ atS, beforeS, afterS, lowS, highS: atS + Math.max(beforeS, afterS), rows: [], localS: [] });
   }
   return changes;
 }
@@ -107,33 +109,33 @@ function nearChange(
   if (localS === change.highS && !(ends && doubles)) return plainS;
   if (doubles) {
     change.rows.push(row);
+    change.localS.push(localS);
     return Number.NaN;
   }
   // an interval that ends as the clock is put forward may be written in the old time
   return ends && localS === change.lowS ? change.atS : Number.NaN;
 }
 
-function tellApart(change: Change, clock: Float64Array, result: UtcTimes): void {
-  const { rows } = change;
-  const back = rows.flatMap((row, i) => (i > 0 && clock[row]! < clock[rows[i - 1]!]! ? [i] : []));
-  const second = back.length === 1 ? rows.map((_, i) => i >= back[0]!) : byOccurrence(change, clock);
-  const times = new Set(rows.map((row) => clock[row]!));
+function tellApart(change: Change, result: UtcTimes): void {
+  const { rows, localS } = change;
+  const back = localS.flatMap((timeS, i) => (i > 0 && timeS < localS[i - 1]! ? [i] : []));
+  const second = back.length === 1 ? rows.map((_, i) => i >= back[0]!) : byOccurrence(change);
+  const times = new Set(localS);
   const once = back.length === 0 && times.size === rows.length;
   rows.forEach((row, i) => {
-    result.utcS[row] = clock[row]! - (second[i] ? change.afterS : change.beforeS);
+    result.utcS[row] = localS[i]! - (second[i] ? change.afterS : change.beforeS);
   });
-  const inside = rows.filter((row) => clock[row]! < change.highS).length;
+  const inside = localS.filter((timeS) => timeS < change.highS).length;
   if (once) result.onceRows += inside;
   else result.doubledRows += inside;
 }
 
 /** First, third … row of a time is the first pass; a lone row that ends with the hour is the second, whose clock shows it. */
-function byOccurrence(change: Change, clock: Float64Array): boolean[] {
+function byOccurrence(change: Change): boolean[] {
   const total = new Map<number, number>();
-  for (const row of change.rows) total.set(clock[row]!, (total.get(clock[row]!) ?? 0) + 1);
+  for (const localS of change.localS) total.set(localS, (total.get(localS) ?? 0) + 1);
   const seen = new Map<number, number>();
-  return change.rows.map((row) => {
-    const localS = clock[row]!;
+  return change.localS.map((localS) => {
     const before = seen.get(localS) ?? 0;
     seen.set(localS, before + 1);
     if (total.get(localS) === 1) return localS === change.highS;

@@ -1,5 +1,5 @@
 import { zoneTable } from '#libs/contract/time-zone.js';
-import { InputProblem, type Remark, UTC_TABLE, type ZoneTable } from '#libs/engine/index.js';
+import { InputProblem, offsetAtS, type Remark, UTC_TABLE, type ZoneTable } from '#libs/engine/index.js';
 import { note } from '../note.js';
 import { clockTimes, orderRows } from './clock-times.js';
 import { describeDate } from './date-orders.js';
@@ -27,8 +27,8 @@ export interface StampRules {
 export interface Moments {
   /** UTC, one a row; NaN where the zone's clock never showed the time [s] */
   utcS: Float64Array;
-  /** time as written, one a row [s] */
-  clock: Float64Array;
+  /** time of a row by its clock, midnights that were moved under the day they begin [s] */
+  clockAt: (row: number) => number;
   /** rows stand newest first */
   newestFirst: boolean;
   zone: ZoneTable;
@@ -45,14 +45,15 @@ export interface Moments {
  */
 export function momentsOf(rows: StampedRows, rules: StampRules, ends: boolean): Moments {
   const clock = clockTimes(rows, rules.order);
-  if (rows.offsetS !== null) return ownMoments(rows, clock, rows.offsetS);
+  if (rows.offsetS !== null) return ownMoments(clock, rows.offsetS);
   const zone = zoneOver(rules.zone ?? 'UTC', clock);
   const notes: Remark[] = [];
   if (rules.zone === null) notes.push(note('zone-assumed-utc', {}));
   else if (rules.zoneFromHeader) notes.push(note('zone-from-header', { zone: rules.zone }));
   if (rules.elapsed) {
     const passedS = rows.clockS.subarray(0, rows.count);
-    return { utcS: elapsedMoments(clock, passedS, zone), clock, newestFirst: false, zone, notes };
+    const utcS = elapsedMoments(clock, passedS, zone);
+    return { utcS, clockAt: clockIn(utcS, zone), newestFirst: false, zone, notes };
   }
   const { newestFirst, movedMidnights } = orderRows(clock, rows, rules.mark !== 'begin');
   const { utcS, doubledRows, onceRows } = localToUtc(clock, newestFirst, zone, ends || movedMidnights > 0);
@@ -60,13 +61,17 @@ export function momentsOf(rows: StampedRows, rules: StampRules, ends: boolean): 
   if (movedMidnights > 0) notes.push(note('midnight-under-ending-day', { rows: movedMidnights }));
   if (doubledRows > 0) notes.push(note('doubled-hour-by-order', { rows: doubledRows }));
   if (onceRows > 0) notes.push(note('doubled-hour-once', { rows: onceRows }));
-  return { utcS, clock, newestFirst, zone, notes };
+  return { utcS, clockAt: clockIn(utcS, zone), newestFirst, zone, notes };
 }
 
-function ownMoments(rows: StampedRows, clock: Float64Array, offsetS: Int32Array): Moments {
-  const utcS = new Float64Array(rows.count);
-  for (let i = 0; i < rows.count; i++) utcS[i] = clock[i]! - offsetS[i]!;
-  return { utcS, clock, newestFirst: false, zone: UTC_TABLE, notes: [] };
+function clockIn(utcS: Float64Array, zone: ZoneTable): Moments['clockAt'] {
+  return (row) => utcS[row]! + offsetAtS(zone, utcS[row]!);
+}
+
+function ownMoments(utcS: Float64Array, offsetS: Int32Array): Moments {
+  for (let i = 0; i < utcS.length; i++) utcS[i]! -= offsetS[i]!;
+  const clockAt = (row: number) => utcS[row]! + offsetS[row]!;
+  return { utcS, clockAt, newestFirst: false, zone: UTC_TABLE, notes: [] };
 }
 
 function zoneOver(zone: string, clock: Float64Array): ZoneTable {
@@ -94,8 +99,8 @@ export function showsEnds(
 ): string | null {
   if (moments.notes.some(({ code }) => code === 'midnight-under-ending-day')) return 'midnight under the ending day';
   if (rows.clockS.subarray(0, rows.count).includes(DAY_S)) return 'a stamp of 24:00';
-  const firstS = moments.clock[grid.first]!;
-  const lastS = moments.clock[grid.last]!;
+  const firstS = moments.clockAt(grid.first);
+  const lastS = moments.clockAt(grid.last);
   const atMidnight = (localS: number) => ((localS % DAY_S) + DAY_S) % DAY_S === 0;
   return grid.intervalS < DAY_S && lastS > firstS && atMidnight(lastS) && atMidnight(firstS - grid.intervalS)
     ? 'the first stamp one interval past midnight and the last at midnight'
