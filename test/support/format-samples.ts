@@ -37,7 +37,12 @@ export interface FormatSample {
 
 type SlowText = (bytes: Uint8Array, codes: readonly string[]) => SlowRows;
 
-function textSample(name: string, text: string | Uint8Array, slow: SlowText | null, options: ReadOptions = {}): FormatSample {
+function textSample(
+  name: string,
+  text: string | Uint8Array,
+  slow: SlowText | null,
+  options: ReadOptions = {},
+): FormatSample {
   const bytes = typeof text === 'string' ? new TextEncoder().encode(text) : text;
   const of = (file: Uint8Array): SlowReading | null => (slow === null ? null : (codes) => slow(file, codes));
   return {
@@ -148,7 +153,11 @@ const GOLDEN = fileURLToPath(new URL('../golden/meter-files/', import.meta.url))
 /** The project's samples that are files, each for a trap of its own. */
 function goldenTexts(): FormatSample[] {
   const names = readdirSync(GOLDEN).filter((name) => /\.(?:csv|xml|edi|txt)$/.test(name));
-  return names.sort().map((name) => textSample(name, new Uint8Array(readFileSync(GOLDEN + name)), null, { siteTimeZone: 'Europe/Berlin' }));
+  return names
+    .sort()
+    .map((name) =>
+      textSample(name, new Uint8Array(readFileSync(GOLDEN + name)), null, { siteTimeZone: 'Europe/Berlin' }),
+    );
 }
 
 const SHEET = 'xl/worksheets/sheet1.xml';
@@ -184,7 +193,11 @@ function partsSample(): FormatSample {
 }
 
 /** A file of bytes; damage that shows in no sum over it reaches the slow reading too. */
-function bytesSample(name: string, bytes: Uint8Array, slow: ((bytes: Uint8Array) => Promise<SlowRows>) | null): FormatSample {
+function bytesSample(
+  name: string,
+  bytes: Uint8Array,
+  slow: ((bytes: Uint8Array) => Promise<SlowRows>) | null,
+): FormatSample {
   const of = (file: Uint8Array): SlowReading | null => (slow === null ? null : () => slow(file));
   return {
     name,

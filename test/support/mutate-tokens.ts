@@ -1,7 +1,23 @@
 import { type Chance, mutate } from './mutate-file.js';
 
 const NUMBER = /[-+]?\d+(?:\.\d+)?/g;
-const ODD_NUMBERS = ['NaN', 'INF', '-Infinity', '1e308', '1e309', '1e-400', '-0', '', '-1', '2024-05-06', '0x1F', '1,5', '1.', '.5', '1e3'];
+const ODD_NUMBERS = [
+  'NaN',
+  'INF',
+  '-Infinity',
+  '1e308',
+  '1e309',
+  '1e-400',
+  '-0',
+  '',
+  '-1',
+  '2024-05-06',
+  '0x1F',
+  '1,5',
+  '1.',
+  '.5',
+  '1e3',
+];
 
 /** Units and codes of units that are put in each other's place. */
 const UNITS = [
@@ -34,7 +50,8 @@ function onMatch(text: string, pattern: RegExp, chance: Chance, change: (match: 
 
 /** The pieces a text is made of: elements, segments or lines. */
 function pieces(text: string): RegExp {
-  if (/^\s*</.test(text)) return /<([\w:]+)[^<>]*>[^<]*<\/\1>|<(\w*:?(?:IntervalReadings?|entry|row|c))\b[^>]*>[\s\S]*?<\/\2>/g;
+  if (/^\s*</.test(text))
+    return /<([\w:]+)[^<>]*>[^<]*<\/\1>|<(\w*:?(?:IntervalReadings?|entry|row|c))\b[^>]*>[\s\S]*?<\/\2>/g;
   return /^UNA|^UNB/.test(text) ? /[^']+'/g : /[^\n]+\n/g;
 }
 
@@ -44,7 +61,8 @@ type TextMutation = (text: string, chance: Chance) => string;
 export const TOKEN_MUTATIONS: Record<string, TextMutation> = {
   oddNumber: (text, chance) => onMatch(text, NUMBER, chance, () => chance.of(ODD_NUMBERS)),
   manyDigits: (text, chance) => onMatch(text, NUMBER, chance, () => '9'.repeat(1 + chance.below(400))),
-  otherSign: (text, chance) => onMatch(text, NUMBER, chance, (number) => (number.startsWith('-') ? number.slice(1) : `-${number}`)),
+  otherSign: (text, chance) =>
+    onMatch(text, NUMBER, chance, (number) => (number.startsWith('-') ? number.slice(1) : `-${number}`)),
   otherDigit: (text, chance) => onMatch(text, /\d/g, chance, () => String(chance.below(10))),
   numbersSwapped: (text, chance) => {
     const numbers = text.match(NUMBER) ?? ['0'];

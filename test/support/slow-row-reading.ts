@@ -57,7 +57,8 @@ export function readDaysSlowly(text: string): SlowRows {
   const columns = { kWh: new Map<number, number>(), kvarh: new Map<number, number>() };
   for (const [date = '', unit = '', ...cells] of lines) {
     if (date === 'date') continue;
-    if (!/^\d{4}-\d\d-\d\d$/.test(date) || (unit !== 'kWh' && unit !== 'kvarh')) throw new SlowUnsure(`${date} ${unit}`);
+    if (!/^\d{4}-\d\d-\d\d$/.test(date) || (unit !== 'kWh' && unit !== 'kvarh'))
+      throw new SlowUnsure(`${date} ${unit}`);
     if (cells.length !== 24) throw new SlowRefusal(`${cells.length} hours`);
     cells.forEach((cell, hour) => {
       const atS = Date.parse(date) / 1000 + hour * 3600;
@@ -91,7 +92,9 @@ function tableSlowly(table: readonly (readonly Cell[])[]): SlowRows {
 
 /** @param parts of a workbook of one sheet with stamps as serial numbers in column A */
 export function readSheetSlowly(sheet: string, strings: string): SlowRows {
-  const texts = [...strings.matchAll(/<si>(.*?)<\/si>/g)].map(([, item]) => /<t[^>]*>(.*?)<\/t>/.exec(item!)?.[1] ?? '');
+  const texts = [...strings.matchAll(/<si>(.*?)<\/si>/g)].map(
+    ([, item]) => /<t[^>]*>(.*?)<\/t>/.exec(item!)?.[1] ?? '',
+  );
   if (/<!--|CDATA|&/.test(sheet + strings)) throw new SlowUnsure('more than plain text');
   const table = [...sheet.matchAll(/<row\b[^>]*>(.*?)<\/row>/gs)].map(([, row]) => {
     const cells: Cell[] = [];
@@ -130,7 +133,10 @@ export async function readParquetSlowly(bytes: Uint8Array): Promise<SlowRows> {
   const names = Object.keys(objects[0] ?? {}).filter((name) => !/feeder|mark/.test(name));
   const times = names.filter((name) => !/\[|^kW$|^kvar$/.test(name));
   if (names.length !== 3 || times.length !== 1) throw new SlowUnsure(`columns ${names.join()}`);
-  return tableSlowly([names, ...objects.map((object) => names.map((name) => stampOf(object[name], name === times[0])))]);
+  return tableSlowly([
+    names,
+    ...objects.map((object) => names.map((name) => stampOf(object[name], name === times[0]))),
+  ]);
 }
 
 function stampOf(cell: Cell, stamp: boolean): Cell {

@@ -116,7 +116,9 @@ export function readEspiSlowly(text: string): SlowRows {
   entries.forEach((entry) => {
     if (child(child(entry, 'content'), 'MeterReading') === undefined) return;
     const related = linksOf(entry, 'related');
-    const at = entries.findIndex((other, i) => kinds[i] && linksOf(other, 'self').some((self) => related.includes(self)));
+    const at = entries.findIndex(
+      (other, i) => kinds[i] && linksOf(other, 'self').some((self) => related.includes(self)),
+    );
     const [self] = linksOf(entry, 'self');
     const type = kinds[at];
     if (type === undefined || self === undefined) throw new SlowUnsure('a link is lost');
@@ -158,10 +160,17 @@ export function readCimSlowly(text: string): SlowRows {
     const codes = ref.split('.').map(Number);
     const expected = [0, 0, 2, 4, codes[4]!, 1, 12, 0, 0, 0, 0, 0, 0, 0, 0, codes[15]!, codes[16]!, 0];
     if (codes.join() !== expected.join()) throw new SlowUnsure(`type ${ref}`);
-    const known = series.get(ref) ?? { flow: codes[4]!, power: codes[15]!, unit: codes[16]!, values: new Map(), lengths: new Set([900]) };
+    const known = series.get(ref) ?? {
+      flow: codes[4]!,
+      power: codes[15]!,
+      unit: codes[16]!,
+      values: new Map(),
+      lengths: new Set([900]),
+    };
     series.set(ref, known);
     for (const reading of all(block, 'IntervalReadings')) {
-      if (reading.nodes.some(({ name }) => name !== 'timeStamp' && name !== 'value')) throw new SlowUnsure('more of a reading');
+      if (reading.nodes.some(({ name }) => name !== 'timeStamp' && name !== 'value'))
+        throw new SlowUnsure('more of a reading');
       const stamp = textOf(child(reading, 'timeStamp'));
       const endS = /^\d{4}-\d\d-\d\dT\d\d:\d\d:\d\dZ$/.test(stamp) ? Date.parse(stamp) / 1000 : Number.NaN;
       if (Number.isNaN(endS)) throw new SlowUnsure(`stamp ${stamp}`);
