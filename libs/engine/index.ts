@@ -87,6 +87,7 @@ export * from './plan/assess-bank.js';
 export * from './plan/estimate-result.js';
 export * from './plan/figure.js';
 export * from './plan/judge-basis.js';
+export * from './plan/money-papers.js';
 export * from './plan/network-scene.js';
 export * from './plan/outcome.js';
 export * from './plan/outcome-of.js';
