@@ -32,10 +32,7 @@ export function cashFlowFigure(money: PricedMoney, papers: MoneyPapers): Chart {
   const end = sums.at(-1)!;
   const bars = [0 - capital, ...years.map(({ net }) => net)];
   const lastYear = years.length;
-  const ring: Mark[] =
-    money.paybackYears === null
-      ? []
-      : [{ kind: 'ring', x: money.paybackYears, y: 0, text: formatPayback(money.paybackYears), side: 'below' }];
+  const ring: Mark[] = money.paybackYears === null ? [] : [{ kind: 'ring', x: money.paybackYears, y: 0 }];
   return {
     id: 'cashFlow',
     finding:

@@ -89,7 +89,7 @@ function Working({ name, line }: { name: string; line: BillLine }) {
   const text = working.length > LONGEST ? `${working.slice(0, LONGEST)} …` : working;
   return (
     <span className="caption beneath bill-working">
-      {`${name}, ${formatQuantity(quantity, unit, 'answer')}: ${text}`}
+      {`${name}, ${formatQuantity(quantity, unit, 'working')}: ${text}`}
     </span>
   );
 }

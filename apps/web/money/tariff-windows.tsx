@@ -26,7 +26,7 @@ export function TariffWindows() {
               <QuantityField path={`${PATH}[${at}].hours[${k}][1]`} label="to, hour" />
             </span>
           ))}
-          <NumberListField path={`${PATH}[${at}].days`} label="days, 1 Monday, 8 holiday" most={8} />
+          <NumberListField path={`${PATH}[${at}].days`} label="days, 1 Monday" most={8} />
           <NumberListField path={`${PATH}[${at}].months`} label="months" most={12} />
           <button type="button" className="way" onClick={() => put(windows.toSpliced(at, 1))}>
             Remove<span className="hidden"> {name}</span>
