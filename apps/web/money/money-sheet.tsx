@@ -116,7 +116,7 @@ function CapitalTable({ money, currency }: { money: PricedMoney; currency: strin
             {capital.lines.map(({ item, working, amount }) => (
               <tr key={item}>
                 <th scope="row">{item}</th>
-                <td className="bill-working">{working}</td>
+                <td className="told">{working}</td>
                 <td className="right">{formatFixed(amount, 0)}</td>
               </tr>
             ))}

@@ -1,4 +1,4 @@
-import { useState } from 'react';
+import { Fragment, useState } from 'react';
 import type { BillLine, Money, MoneyPapers } from '#libs/engine/index.js';
 import { formatFixed, formatQuantity } from '#libs/present/format-number.js';
 import { formatMonth } from '#libs/present/local-stamp.js';
@@ -52,16 +52,20 @@ export function MonthBill({ bills, papers }: { bills: Money['bills']; papers: Mo
           </thead>
           <tbody>
             {month.lines.map((line, k) => (
-              <tr key={line.clause}>
-                <th scope="row">
-                  {line.clause}
-                  <Working name="before" line={line} />
-                  <Working name="after" line={left.lines[k]!} />
-                </th>
-                <td className="right">{amount(line.amount)}</td>
-                <td className="right">{amount(left.lines[k]!.amount)}</td>
-                <td className="right">{amount(line.amount - left.lines[k]!.amount)}</td>
-              </tr>
+              <Fragment key={line.clause}>
+                <tr className="headed">
+                  <th scope="row">{line.clause}</th>
+                  <td className="right">{amount(line.amount)}</td>
+                  <td className="right">{amount(left.lines[k]!.amount)}</td>
+                  <td className="right">{amount(line.amount - left.lines[k]!.amount)}</td>
+                </tr>
+                <tr>
+                  <td colSpan={4}>
+                    <Working name="before" line={line} />
+                    <Working name="after" line={left.lines[k]!} />
+                  </td>
+                </tr>
+              </Fragment>
             ))}
             {month.tax === 0 && left.tax === 0 ? null : (
               <Sum name="tax" before={month.tax} after={left.tax} amount={amount} />
@@ -87,11 +91,7 @@ function mostSaved({ before, after }: Money['bills']): number {
 function Working({ name, line }: { name: string; line: BillLine }) {
   const { working, quantity, unit } = line;
   const text = working.length > LONGEST ? `${working.slice(0, LONGEST)} …` : working;
-  return (
-    <span className="caption beneath bill-working">
-      {`${name}, ${formatQuantity(quantity, unit, 'working')}: ${text}`}
-    </span>
-  );
+  return <span className="caption told">{`${name}, ${formatQuantity(quantity, unit, 'working')}: ${text}`}</span>;
 }
 
 function Sum({

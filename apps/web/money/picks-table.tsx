@@ -1,3 +1,4 @@
+import { Fragment } from 'react';
 import type { Alternative, Money, MoneyPapers } from '#libs/engine/index.js';
 import { formatFixed, formatNumber, formatQuantity } from '#libs/present/format-number.js';
 import { namedPicks, proofWords } from '#libs/present/money-words.js';
@@ -39,29 +40,39 @@ export function PicksTable({ money, papers }: { money: Money; papers: MoneyPaper
           </thead>
           <tbody>
             {picks.map(({ name, way, reason, isRecommended }) => (
-              <tr key={name} className={isRecommended ? 'own' : undefined}>
-                <th scope="row">
-                  {name}
-                  <span className="caption beneath">{reason}</span>
-                </th>
-                <WayCells way={way} />
-              </tr>
+              <Fragment key={name}>
+                <tr className={isRecommended ? 'headed own' : 'headed'}>
+                  <th scope="row">{name}</th>
+                  <WayCells way={way} />
+                </tr>
+                <Told words={reason} />
+              </Fragment>
             ))}
             {money.alternatives
               .filter(({ sample }) => sample)
               .map((way) => (
-                <tr key={way.name}>
-                  <th scope="row">
-                    {way.name}
-                    <span className="caption beneath">a sample of those simulated whole</span>
-                  </th>
-                  <WayCells way={way} />
-                </tr>
+                <Fragment key={way.name}>
+                  <tr className="headed">
+                    <th scope="row">{way.name}</th>
+                    <WayCells way={way} />
+                  </tr>
+                  <Told words="A sample of those simulated whole." />
+                </Fragment>
               ))}
           </tbody>
         </table>
       </section>
     </section>
+  );
+}
+
+function Told({ words }: { words: string }) {
+  return (
+    <tr>
+      <td colSpan={8}>
+        <span className="caption told">{words}</span>
+      </td>
+    </tr>
   );
 }
 
