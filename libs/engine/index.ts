@@ -89,6 +89,7 @@ export * from './plan/estimate-result.js';
 export * from './plan/figure.js';
 export * from './plan/grown-study.js';
 export * from './plan/judge-basis.js';
+export * from './plan/money-papers.js';
 export * from './plan/network-scene.js';
 export * from './plan/outcome.js';
 export * from './plan/outcome-of.js';

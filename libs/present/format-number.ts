@@ -72,6 +72,18 @@ function grouped(plain: string): string {
 }
 
 /**
+ * A number with its decimals fixed, as amounts of money stand under each other.
+ * @param value any finite number
+ * @param decimals how many, 0 for whole numbers
+ * @returns "1 234.50", without a minus where all digits are 0
+ */
+export function formatFixed(value: number, decimals: number): string {
+  if (!Number.isFinite(value)) throw new Error(`a number to print must be finite, got ${value}`);
+  const text = grouped(Math.abs(value).toFixed(decimals));
+  return value < 0 && /[1-9]/.test(text) ? `${MINUS}${text}` : text;
+}
+
+/**
  * A number with its unit, joined so that no line breaks between them.
  * @param value the number, or null where there is none
  * @param unit the unit, empty for a pure number

@@ -1,7 +1,7 @@
 import type { BreakEven, Outcome, WayRobustness } from '#libs/engine/index.js';
 import { formatNumber, formatQuantity } from './format-number.js';
 import { plainName } from './plain-name.js';
-import { MONEY_QUANTITY_WORDS, pickChangeWords, savingWords, WAY_WORDS } from './money-words.js';
+import { MONEY_QUANTITY_WORDS, pickChangeWords, savingWords, WAY_WORDS } from './saving-words.js';
 
 /** A line of a report: what it is, and what is said of it. */
 export interface MoneyLine {

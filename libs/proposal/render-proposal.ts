@@ -15,6 +15,7 @@ import { drawValidity } from './section-limits.js';
 import { drawLoad } from './section-load.js';
 import { drawMeasured } from './section-measured.js';
 import { drawMethod } from './section-method.js';
+import { drawMoney } from './section-money.js';
 import { drawNetwork } from './section-network.js';
 import { drawSignatures } from './section-signatures.js';
 import { drawSiteActions } from './section-site-actions.js';
@@ -25,7 +26,7 @@ export type { ProposalFrame } from './proposal-frame.js';
 /**
  * The proposal as a tagged PDF: equal outcome and frame give equal bytes.
  * A plan without a record prints as an estimate and leaves out what needs one.
- * Sections 10 (sensitivity) and 11 (money) are left out in this edition; the numbers of the others stay.
+ * Section 10 (sensitivity) is left out in this edition; the numbers of the others stay.
  * @param outcome the plan or judgement, its result already put in words
  * @param frame number, revision, state, hash and sheet
  * @returns the file's bytes
@@ -54,6 +55,7 @@ export async function renderProposal(outcome: Outcome | EstimateOutcome, frame: 
   else drawLoad(paper, outcome);
   drawNetwork(paper, outcome);
   drawMeasured(paper, outcome);
+  drawMoney(paper, outcome);
   drawValidity(paper, outcome);
   drawAgeing(paper, outcome);
   drawHandCheck(paper, outcome);

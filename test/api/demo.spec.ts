@@ -49,6 +49,16 @@ for (const { name, available, create } of databases) {
       expect(offered.body.verdict).toBe('avoid');
     });
 
+    it('shows money: the bank that pays, by a tariff and prices that are called invented', async () => {
+      const [site] = (await server.ask('GET', '/api/sites')).body.sites;
+      const { result } = (await server.ask('GET', `/api/sites/${site.id}/revisions/1`)).body;
+      expect(result.money).toMatchObject({ recommended: 'new bank', monthsFilled: 0 });
+      expect(result.money.npv).toBeGreaterThan(0);
+      expect(result.assumptions.map(({ code }: { code: string }) => code)).toContain('prices.invented');
+      expect(DEMO_SITE.tariff.name).toMatch(/invented/);
+      expect(DEMO_SITE.prices).toMatchObject({ invented: true, name: expect.stringMatching(/invented/i) });
+    });
+
     it('leads from its page only to what exists, on this server alone', async () => {
       const links = [...(await page()).matchAll(/(?:href|src)="([^"]*)"/g)].map(([, link]) => link!);
       const own = links.filter((link) => !link.startsWith('data:,'));

@@ -7,7 +7,7 @@ export const STATIONS_SHOWN: Record<string, RegExp> = {
   need: /Rows are hours of the day/,
   bank: /replayed/,
   network: /reactors: every level|levels over a limit/,
-  money: /not priced\.|priced/,
+  money: /an estimate, not a guarantee|not priced\./,
   proposal: /Every revision is kept/,
 };
 

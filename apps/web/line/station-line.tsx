@@ -117,10 +117,17 @@ const FIGURES: Record<Station, (state: DeskState) => { figure: ReactNode; third:
     };
   },
   money: (state) => {
-    const money: unknown = latestResult(state)?.money ?? null;
-    return money === null
-      ? { figure: 'not priced', third: 'no tariff entered' }
-      : { figure: <b>priced</b>, third: 'see the station' };
+    const money = latestResult(state)?.money ?? null;
+    if (money === null)
+      return {
+        figure: 'not priced',
+        third: state.document?.tariff === undefined ? 'no tariff entered' : 'no bank yet',
+      };
+    const currency = String(state.document?.currency ?? '');
+    return {
+      figure: <Quantity value={money.savingPerYear} unit={currency} digits="whole" />,
+      third: 'a year, estimated',
+    };
   },
   proposal: ({ kept }) =>
     kept === null

@@ -1,22 +1,135 @@
+import { type Money, type MoneyPapers, moneyPapers, type Site } from '#libs/engine/index.js';
+import { billsByMonth } from '#libs/present/bills-by-month.js';
+import { cashFlowFigure, isPriced, type PricedMoney } from '#libs/present/cash-flow-figure.js';
+import { formatFixed } from '#libs/present/format-number.js';
+import {
+  financeWords,
+  formatMoney,
+  formatPayback,
+  NO_GUARANTEE,
+  priceBookWords,
+  tariffWords,
+} from '#libs/present/money-words.js';
 import { useDesk } from '../desk/use-desk.js';
+import { Plot } from '../draw/plot.js';
 import { latestResult } from '../line/latest-result.js';
+import { Headline } from '../working/headline.js';
+import { MonthBill } from './month-bill.js';
+import { PicksTable } from './picks-table.js';
+import { PriceFields } from './price-fields.js';
+import { TariffFields } from './tariff-fields.js';
 
-/** What the bank costs and saves, once it is computed. */
+/** What the bank costs and saves: bills, cash flow, the ways that were weighed, and the papers they rest on. */
 export function MoneySheet() {
   const { state } = useDesk();
-  const money: unknown = latestResult(state)?.money ?? null;
-  const papers = ['tariff', 'prices', 'finance'].filter((name) => state.document?.[name] !== undefined);
-  if (money !== null) return <h1>This plan is priced</h1>;
+  const money = latestResult(state)?.money ?? null;
+  // The papers as typed; a key that is no value yet is refused at its field, and the figures stay the last ones.
+  const papers = moneyPapers((state.document ?? {}) as Pick<Site, 'tariff' | 'prices' | 'finance' | 'catalogue'>);
+  const currency = papers.currency === '' ? 'amount' : papers.currency;
+  return (
+    <>
+      {money === null ? <NotPriced papers={papers} /> : <Figures money={money} papers={papers} />}
+      <TariffFields currency={currency} />
+      <PriceFields currency={currency} />
+    </>
+  );
+}
+
+function NotPriced({ papers }: { papers: MoneyPapers }) {
   return (
     <>
       <h1>This plan is not priced.</h1>
       <p className="row gap">
-        Costs and savings are not computed in this edition.{' '}
-        {papers.length === 0
-          ? 'No tariff, price book or finance terms stand in the site file.'
-          : `Kept with the site and not used yet: ${papers.join(', ')}.`}{' '}
-        The bank, its limits and the proposal do not depend on them.
+        {papers.tariff === null
+          ? 'Fill in the tariff’s clauses below, and the price book for what the bank costs. The bank, its limits and the proposal do not depend on them.'
+          : 'Bills and costs follow once a bank stands.'}
       </p>
     </>
+  );
+}
+
+function Figures({ money, papers }: { money: Money; papers: MoneyPapers }) {
+  const { currency } = papers;
+  const saving = formatMoney(money.savingPerYear, currency);
+  return (
+    <>
+      <Headline figures={isPriced(money) ? keyFigures(money, currency) : []}>
+        {money.recommended === 'do nothing'
+          ? `Nothing is to be built for money’s sake; ${NO_GUARANTEE}.`
+          : `The bank saves ${saving} a year, ${NO_GUARANTEE}.`}
+      </Headline>
+      <p className="caption">
+        {tariffWords(papers)} {priceBookWords(papers)} {isPriced(money) ? financeWords(papers) : ''}
+      </p>
+      <PicksTable money={money} papers={papers} />
+      <div className="split halves">
+        <Plot chart={billsByMonth(money.bills, papers)} height={250} />
+        {isPriced(money) ? (
+          <Plot chart={cashFlowFigure(money, papers)} height={250} styles={{ after: 'picked' }} />
+        ) : (
+          <section className="section">
+            <p className="caption">{priceBookWords(papers)}</p>
+          </section>
+        )}
+      </div>
+      <MonthBill bills={money.bills} papers={papers} />
+      {isPriced(money) ? <CapitalTable money={money} currency={currency} /> : null}
+    </>
+  );
+}
+
+function keyFigures(money: PricedMoney, currency: string) {
+  const { capital, npv, paybackYears } = money;
+  return [
+    { value: capital.total, unit: currency, under: 'to build', digits: 'whole' as const },
+    { value: npv, unit: currency, under: 'net present value', digits: 'whole' as const },
+    {
+      value: paybackYears,
+      unit: 'years',
+      under: paybackYears === null ? 'no payback' : `payback, ${formatPayback(paybackYears)}`,
+    },
+    { value: money.irrPct, unit: '%', under: 'internal rate a year' },
+  ];
+}
+
+function CapitalTable({ money, currency }: { money: PricedMoney; currency: string }) {
+  const { capital, running } = money;
+  return (
+    <section className="section" aria-labelledby="capital">
+      <h2 id="capital">{`What it costs: ${formatMoney(capital.total, currency)} to build`}</h2>
+      <p className="caption">
+        {`Maintenance ${formatMoney(running.maintenancePerYear, currency)} and losses ${formatMoney(running.lossPerYear, currency)} a year.`}
+      </p>
+      {/* biome-ignore lint/a11y/noNoninteractiveTabindex: a table that scrolls must be reached by keyboard */}
+      <section className="table" tabIndex={0} aria-label="Items of the capital">
+        <table>
+          <thead>
+            <tr>
+              <th scope="col">item</th>
+              <th scope="col">working</th>
+              <th scope="col" className="right">
+                {currency}
+              </th>
+            </tr>
+          </thead>
+          <tbody>
+            {capital.lines.map(({ item, working, amount }) => (
+              <tr key={item}>
+                <th scope="row">{item}</th>
+                <td className="told">{working}</td>
+                <td className="right">{formatFixed(amount, 0)}</td>
+              </tr>
+            ))}
+            <tr>
+              <th scope="row">together</th>
+              <td />
+              <td className="right">
+                <b>{formatFixed(capital.total, 0)}</b>
+              </td>
+            </tr>
+          </tbody>
+        </table>
+      </section>
+    </section>
   );
 }

@@ -8,6 +8,7 @@ import { compensatedSum } from '../quantity/compensated-sum.js';
 import type { LoadRecord } from '../record/load-record.js';
 import type { Supply, SupplyInput } from '../supply/supply.js';
 import { loadProblems } from './load-problems.js';
+import { moneyPapers } from './money-papers.js';
 import { settleBank } from './settle-bank.js';
 import type { SettledSite } from './settled-site.js';
 import type { Site } from './site.js';
@@ -84,6 +85,7 @@ export function settleSite(site: Site, record: LoadRecord | null): Settled {
     emcClass: 2,
     limits: limitChoice(site.rules, site.limits),
     facts: siteFacts(site),
+    papers: moneyPapers(site),
   };
   // Only this edition has classes.
   if (settled.limits.edition === 'IEC 61000-2-4:2002') {

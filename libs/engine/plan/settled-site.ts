@@ -4,6 +4,7 @@ import type { SiteFacts } from '../duty/site-facts.js';
 import type { Loads } from '../network/loads.js';
 import type { Topology } from '../network/topology.js';
 import type { Supply } from '../supply/supply.js';
+import type { MoneyPapers } from './money-papers.js';
 import type { RecordedBank } from './site.js';
 
 /** The site with every default filled in. */
@@ -27,4 +28,5 @@ export interface SettledSite {
   emcClass: 1 | 2 | 3;
   limits: LimitChoice;
   facts: SiteFacts;
+  papers: MoneyPapers;
 }

@@ -39,8 +39,7 @@ describe('a record that a further file extends', () => {
     }
     expect(extended.record.duplicates).toBe(100);
     expect(extended.quality).toEqual({ ...whole.quality, rowsRead: 2100, duplicates: 100 });
-    expect(extended.record.notes.at(-1)).toMatchObject({
-      code: 'record-extended',
+    expect(extended.record.notes.find(({ code }) => code === 'record-extended')).toMatchObject({
       values: { added: 800, agreed: 100 },
     });
   });

@@ -1,0 +1,55 @@
+import type { MoneyQuantity, PickChange, Recommended, SavingCase, SavingRange } from '#libs/engine/index.js';
+import { formatNumber, formatQuantity } from './format-number.js';
+import { NO_GUARANTEE } from './money-words.js';
+
+/** How each case of a saving reads after its amount. */
+export const SAVING_CASE_WORDS: Record<SavingCase['name'], string> = {
+  ideal: 'with an ideal controller',
+  'one interval late': 'deciding one interval late',
+  '95 % available': 'out one day in twenty',
+  'one stage out': 'with one stage out',
+};
+
+/** What is moved, as a noun. */
+export const MONEY_QUANTITY_WORDS: Record<MoneyQuantity, string> = {
+  load: 'load',
+  capacitance: 'capacitance',
+  stages: 'stages',
+  'fault level': 'fault level',
+  costs: 'costs',
+  tariff: 'tariff',
+};
+
+/** The ways that are weighed, as they are named within a sentence. */
+export const WAY_WORDS: Record<Recommended, string> = {
+  'do nothing': 'doing nothing',
+  "keep today's bank": 'keeping today’s bank',
+  'new bank': 'a new bank',
+};
+
+/**
+ * A saving with its range.
+ * @param saving of a bank
+ * @param currency of the site, or null
+ * @returns one phrase a case, the headline first
+ */
+export function savingWords(saving: SavingRange, currency: string | null): string[] {
+  const amount = (value: number): string => formatQuantity(value, currency ?? '', 'whole');
+  return [
+    `${amount(saving.headlinePerYear)} a year, ${NO_GUARANTEE}`,
+    ...saving.cases.map(({ name, savingPerYear }) => `${amount(savingPerYear)} ${SAVING_CASE_WORDS[name]}`),
+  ];
+}
+
+/**
+ * Where another way would be the pick.
+ * @param change of one quantity
+ * @returns a phrase for each end that there is
+ */
+export function pickChangeWords(change: PickChange): string[] {
+  const { quantity, lowFactor, highFactor, nameBelow, nameAbove } = change;
+  const noun = MONEY_QUANTITY_WORDS[quantity];
+  const end = (factor: number | null, name: Recommended | null, side: string): string[] =>
+    factor === null || name === null ? [] : [`${WAY_WORDS[name]} with ${noun} ${side} × ${formatNumber(factor)}`];
+  return [...end(lowFactor, nameBelow, 'below'), ...end(highFactor, nameAbove, 'above')];
+}
