@@ -53,6 +53,8 @@ export function ClauseSentence({ path, currency }: Placed) {
       );
     case 'demand':
       return <DemandSentence {...placed} clause={clause} />;
+    case 'contractedDemand':
+      return <ContractSentence {...placed} clause={clause} />;
     case 'percent':
       return (
         <>
@@ -179,5 +181,35 @@ function DemandSentence({ path, currency, clause }: Placed & { clause: Extract<C
       </div>
       {clause.scale === undefined ? null : <ScaleFields path={`${path}.scale`} />}
     </>
+  );
+}
+
+function ContractSentence({
+  path,
+  currency,
+  clause,
+}: Placed & { clause: Extract<Clause, { kind: 'contractedDemand' }> }) {
+  const unit = clause.basis === 'kVA' ? 'kVA' : 'kW';
+  return (
+    <div className="sentence">
+      <span>A contracted demand of</span>
+      <QuantityField path={`${path}.contracted`} label={unit} />
+      <ChoiceField
+        path={`${path}.basis`}
+        label="measured in"
+        choices={[
+          ['kW', 'kW'],
+          ['kVA', 'kVA'],
+          ['kWOrKvaShare', 'kW, or a share of kVA'],
+        ]}
+      />
+      {clause.basis === 'kWOrKvaShare' ? <QuantityField path={`${path}.kvaShare`} label="share of kVA" /> : null}
+      <span>costs</span>
+      <QuantityField path={`${path}.pricePerUnit`} label={`${currency} per ${unit}`} />
+      <span>a month, and what is drawn beyond it by more than</span>
+      <QuantityField path={`${path}.tolerancePct`} label="tolerance" unit="%" otherwise="0" />
+      <span>costs</span>
+      <QuantityField path={`${path}.overrunPricePerUnit`} label={`${currency} per ${unit} of overrun`} />
+    </div>
   );
 }

@@ -14,6 +14,7 @@ const KINDS: Record<Clause['kind'], string> = {
   kvarhBeyondRatio: 'kvarh beyond a ratio',
   kvarBeyondRatio: 'kvar beyond a ratio',
   demand: 'demand',
+  contractedDemand: 'contracted demand',
   percent: 'percentage of lines',
   formula: 'formula',
 };
@@ -34,6 +35,8 @@ function starter(kind: Clause['kind'], name: string): Clause {
       return { name, kind, ratio: 0.33, pricePerUnit: 0 };
     case 'demand':
       return { name, kind, basis: 'kVA', pricePerUnit: 0 };
+    case 'contractedDemand':
+      return { name, kind, basis: 'kW', contracted: 0, pricePerUnit: 0, overrunPricePerUnit: 0 };
     case 'percent':
       return { name, kind, applies: 'all', scale };
     case 'formula':
