@@ -22,19 +22,30 @@ const program = fileURLToPath(new URL('../../dist/apps/cli/main.js', import.meta
 const SAYS = 'process.stderr.write("held " + (process.resourceUsage().maxRSS * 1024) / 1e6 + " MB")';
 const HOOK = `data:text/javascript,process.on("exit",()=>${SAYS})`;
 
+const WANTED = {
+  'kW and kvar': {
+    header: 'active power (kW),reactive power (kvar)',
+    cells: (row: number) => `${row % 997}.125,${row % 331}.5`,
+  },
+  'energies and voltage': {
+    header: 'import kWh,export kWh,lagging kvarh,leading kvarh,voltage V',
+    cells: (row: number) => `${row % 97}.125,${row % 7}.5,${row % 31}.25,${row % 5}.5,${400 + (row % 7)}.5`,
+  },
+};
+
 /** Free text, a header, then minutes with many columns nobody asks for. */
-function* largeFile(): Generator<string> {
+function* largeFile(wanted: (typeof WANTED)[keyof typeof WANTED]): Generator<string> {
   for (let row = 0; row < PREAMBLE_ROWS; row += ROWS_A_CHUNK) {
     yield Array.from({ length: ROWS_A_CHUNK }, (_, i) => `remark ${row + i} on the installation\n`).join('');
   }
   const beside = Array.from({ length: COLUMNS_BESIDE }, (_, k) => `channel ${k}`).join(',');
-  yield `time UTC,${beside},active power (kW),reactive power (kvar)\n`;
+  yield `time UTC,${beside},${wanted.header}\n`;
   const cells = Array.from({ length: COLUMNS_BESIDE }, (_, k) => `${100 + k}.${k}`).join(',');
   const firstMs = Date.UTC(2020, 0, 1);
   for (let row = 0; row < INTERVALS; row += ROWS_A_CHUNK) {
     const rows = Array.from({ length: ROWS_A_CHUNK }, (_, i) => {
       const stamp = new Date(firstMs + (row + i) * 60_000).toISOString().slice(0, 19).replace('T', ' ');
-      return `${stamp},${cells},${(row + i) % 997}.125,${(row + i) % 331}.5\n`;
+      return `${stamp},${cells},${wanted.cells(row + i)}\n`;
     });
     yield rows.join('');
   }
@@ -54,14 +65,14 @@ async function textOf(stream: Readable): Promise<string> {
   return text;
 }
 
-describe('a file far larger than its record', () => {
+describe.each(Object.entries(WANTED))('a file of %s far larger than its record', (_, wanted) => {
   let dir: string;
   let file: string;
 
   beforeAll(async () => {
     dir = mkdtempSync(join(tmpdir(), 'varwright-large-'));
     file = join(dir, 'large.csv');
-    await pipeline(Readable.from(largeFile()), createWriteStream(file));
+    await pipeline(Readable.from(largeFile(wanted)), createWriteStream(file));
   });
 
   afterAll(() => rmSync(dir, { recursive: true, force: true }));

@@ -143,10 +143,13 @@ async function readRows(
   const plan = quickReader?.quickPlan() ?? null;
   const quick = plan === null || quickReader === null ? null : new QuickRows(quickReader.rows, plan);
   const lanes = { taker, quickReader, quick, cells: new RowCells() };
+  // what lies before the header holds no rows
+  const beforeBytes = buffer.takenBytes;
   do {
     takeRows(buffer, layout, lanes);
     const rows = quickReader?.rows;
-    if (rows !== undefined) rows.likelyRows = likelyRows(rows.count, buffer.takenBytes, sizeBytes);
+    if (rows !== undefined)
+      rows.likelyRows = likelyRows(rows.count, buffer.takenBytes - beforeBytes, sizeBytes - beforeBytes);
     if (buffer.end - buffer.start > LONGEST_ROW_BYTES) buffer.refuseEndlessRow();
   } while (await buffer.more());
   if (buffer.end > buffer.start) refuseOpenQuote(buffer.rowsBefore + 1);
@@ -154,7 +157,7 @@ async function readRows(
 
 /** Rows of the whole file if it goes on as it began, with a little to spare. */
 function likelyRows(rows: number, takenBytes: number, sizeBytes: number): number {
-  return takenBytes > 0 ? Math.ceil((rows / takenBytes) * sizeBytes * 1.03) : 0;
+  return takenBytes > 0 && sizeBytes > 0 ? Math.ceil((rows / takenBytes) * sizeBytes * 1.03) : 0;
 }
 
 interface Lanes {
