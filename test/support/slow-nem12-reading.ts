@@ -96,8 +96,8 @@ function valuesOf(cells: string[], { minutes, scale, energy }: Stream) {
   if (!/^([ASFENV]\d{0,2})?$/.test(flag)) throw new SlowRefusal(`flag ${flag}`);
   return cells.slice(2, 2 + count).map((cell) => {
     if (/^(na|n\/a|nan|null|\?|-|--|\.|\*|#|nil|none|nd)?$/i.test(cell)) return null;
-    const value = /^[+]?(?:\d+(?: \d{3})*\.?\d*|\.\d+)(?:e[-+]?\d+)?$/i.test(cell)
-      ? Number(cell.replaceAll(' ', ''))
+    const value = /^(?:[+]|-(?=[0.]*$))?(?:\d+(?: \d{3})*\.?\d*|\.\d+)(?:e[-+]?\d+)?$/i.test(cell)
+      ? Number(cell.replaceAll(' ', '')) + 0
       : Number.NaN;
     if (!Number.isFinite(value)) throw new SlowRefusal(`value ${cell}`);
     if (flag.startsWith('N')) return null;

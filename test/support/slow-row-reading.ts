@@ -98,31 +98,35 @@ export function readSheetSlowly(sheet: string, strings: string): SlowRows {
   if (/<!--|CDATA|&/.test(sheet + strings)) throw new SlowUnsure('more than plain text');
   const table = [...sheet.matchAll(/<row\b[^>]*>(.*?)<\/row>/gs)].map(([, row]) => {
     const cells: Cell[] = [];
-    for (const [, attributes, content] of row!.matchAll(/<c\b([^>]*)>(.*?)<\/c>/gs)) {
-      const letter = /r="([A-C])\d+"/.exec(attributes!)?.[1];
-      const value = [...content!.matchAll(/<v>([^<]*)<\/v>/g)];
-      if (letter === undefined || value.length !== 1) throw new SlowUnsure('another cell');
-      const text = value[0]![1]!.trim();
-      const at = 'ABC'.indexOf(letter);
-      if (/t="s"/.test(attributes!)) cells[at] = texts[Number(text)];
-      else if (/\bt=/.test(attributes!)) throw new SlowUnsure('another kind of cell');
-      else if (/s="2"/.test(attributes!)) cells[at] = new Date(Math.round((Number(text) - 25_569) * 86_400) * 1000);
-      else if (/\bs=/.test(attributes!)) throw new SlowUnsure('another style');
-      else cells[at] = text === '' ? null : Number(text);
+    for (const [, attributes = '', content = ''] of row!.matchAll(/<c\b([^>]*)>(.*?)<\/c>/gs)) {
+      const letter = /r="([A-C])\d+"/.exec(attributes)?.[1];
+      if (letter === undefined) throw new SlowUnsure('a cell elsewhere');
+      cells['ABC'.indexOf(letter)] = sheetCell(attributes, content, texts);
     }
     return Array.from(cells);
   });
   return tableSlowly(table.filter((cells) => cells.length > 0).map((cells) => [0, 1, 2].map((at) => cells[at])));
 }
 
+function sheetCell(attributes: string, content: string, texts: readonly string[]): Cell {
+  const values = [...content.matchAll(/<v>([^<]*)<\/v>/g)];
+  if (values.length !== 1) throw new SlowUnsure('another cell');
+  const text = values[0]![1]!.trim();
+  if (/t="s"/.test(attributes)) return texts[Number(text)];
+  if (/\bt=/.test(attributes)) throw new SlowUnsure('another kind of cell');
+  if (/s="2"/.test(attributes)) return new Date(Math.round((Number(text) - 25_569) * 86_400) * 1000);
+  if (/\bs=/.test(attributes)) throw new SlowUnsure('another style');
+  return text === '' ? null : Number(text);
+}
+
 const unpacked = (bytes: Uint8Array) => Uint8Array.from(bytes);
+const compressors = Object.fromEntries([
+  ['GZIP', (input: Uint8Array) => unpacked(gunzipSync(input))],
+  ['BROTLI', (input: Uint8Array) => unpacked(brotliDecompressSync(input))],
+]);
 
 /** @param bytes a table of a stamp, kW and kvar, and columns that have no meaning */
 export async function readParquetSlowly(bytes: Uint8Array): Promise<SlowRows> {
-  const compressors = {
-    GZIP: (input: Uint8Array) => unpacked(gunzipSync(input)),
-    BROTLI: (input: Uint8Array) => unpacked(brotliDecompressSync(input)),
-  };
   const file = Uint8Array.from(bytes).buffer;
   let objects: Record<string, Cell>[];
   try {

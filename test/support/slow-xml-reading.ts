@@ -21,6 +21,13 @@ function plain(text: string): string {
   return text.replace(/&(\w+);/g, (_, name: string) => known[name]!);
 }
 
+function nodeOf(tag: string): Node {
+  const name = /^<(?:[^\s/>:]*:)?([^\s/>]+)/.exec(tag)?.[1] ?? '';
+  const attributes = [...tag.matchAll(/([\w:.-]+)\s*=\s*(?:"([^"]*)"|'([^']*)')/g)];
+  const pairs = attributes.map(([, key, a, b]) => [key!, plain(a ?? b ?? '')] as const);
+  return { name, attributes: new Map(pairs), nodes: [], text: '' };
+}
+
 function treeOf(text: string): Node {
   const root: Node = { name: '', attributes: new Map(), nodes: [], text: '' };
   const open = [root];
@@ -30,10 +37,7 @@ function treeOf(text: string): Node {
     else if (/^<[!?]/.test(piece)) continue;
     else if (piece.startsWith('</')) open.pop();
     else if (piece.startsWith('<')) {
-      const name = /^<(?:[^\s/>:]*:)?([^\s/>]+)/.exec(piece)?.[1] ?? '';
-      const attributes = [...piece.matchAll(/([\w:.-]+)\s*=\s*(?:"([^"]*)"|'([^']*)')/g)];
-      const pairs = attributes.map(([, key, a, b]) => [key!, plain(a ?? b ?? '')] as const);
-      const node: Node = { name, attributes: new Map(pairs), nodes: [], text: '' };
+      const node = nodeOf(piece);
       top.nodes.push(node);
       if (!piece.endsWith('/>')) open.push(node);
     } else top.text += plain(piece);
@@ -168,14 +172,16 @@ export function readCimSlowly(text: string): SlowRows {
       lengths: new Set([900]),
     };
     series.set(ref, known);
-    for (const reading of all(block, 'IntervalReadings')) {
-      if (reading.nodes.some(({ name }) => name !== 'timeStamp' && name !== 'value'))
-        throw new SlowUnsure('more of a reading');
-      const stamp = textOf(child(reading, 'timeStamp'));
-      const endS = /^\d{4}-\d\d-\d\dT\d\d:\d\d:\d\dZ$/.test(stamp) ? Date.parse(stamp) / 1000 : Number.NaN;
-      if (Number.isNaN(endS)) throw new SlowUnsure(`stamp ${stamp}`);
-      add(known, endS - 900, numberOf(textOf(child(reading, 'value'))));
-    }
+    for (const reading of all(block, 'IntervalReadings')) addCim(known, reading);
   }
   return rowsOf([...series.values()]);
+}
+
+function addCim(series: Series, reading: Node): void {
+  if (reading.nodes.some(({ name }) => !['timeStamp', 'value'].includes(name)))
+    throw new SlowUnsure('more of a reading');
+  const stamp = textOf(child(reading, 'timeStamp'));
+  const endS = /^\d{4}-\d\d-\d\dT\d\d:\d\d:\d\dZ$/.test(stamp) ? Date.parse(stamp) / 1000 : Number.NaN;
+  if (Number.isNaN(endS)) throw new SlowUnsure(`stamp ${stamp}`);
+  add(series, endS - 900, numberOf(textOf(child(reading, 'value'))));
 }

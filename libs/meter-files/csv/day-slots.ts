@@ -33,6 +33,9 @@ interface Label {
   kind: 'clock' | 'count' | 'ending' | 'beginning';
 }
 
+/** Longer names are no hours: searching them for one would take the square of their length. */
+const LONGEST_LABEL = 200;
+
 const CLOCK =
   /^(.*?)[\s_(]*(\d{1,2})[:h](\d{2})(?::00)?(?:\s*(?:-|–|to|bis|à)\s*(\d{1,2})[:h](\d{2})(?::00)?)?\)?\s*(?:[ab*²]|\(2\))?$/iu;
 const DIGITS = /^(\d{2})(\d{2})$/;
@@ -56,7 +59,7 @@ export function daySlots(names: readonly string[], stamp: 'begin' | 'end' | unde
 }
 
 function clockLabel(name: string, column: number): Label | null {
-  const parts = CLOCK.exec(name);
+  const parts = name.length > LONGEST_LABEL ? null : CLOCK.exec(name);
   if (parts === null) return null;
   const [, rest, hour, minute, untilHour, untilMinute] = parts;
   const until = untilHour === undefined ? null : Number(untilHour) * 3600 + Number(untilMinute) * 60;
@@ -70,7 +73,7 @@ function digitLabel(name: string, column: number): Label | null {
 }
 
 function countLabel(name: string, column: number): Label | null {
-  const parts = COUNT.exec(name);
+  const parts = name.length > LONGEST_LABEL ? null : COUNT.exec(name);
   if (parts === null) return null;
   const word = parts[2]?.toLowerCase() ?? '';
   const kind = word === 'he' || word === 'hour ending' ? 'ending' : /^hb|beginning$/.test(word) ? 'beginning' : 'count';

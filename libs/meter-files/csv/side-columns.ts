@@ -44,7 +44,7 @@ export function sideColumns(
 /** A bare “meter” that holds another text in every row names none. */
 function isMeter({ role, name }: HeaderColumn, cells: readonly string[]): boolean {
   if (role !== 'meter') return false;
-  const named = /[\p{L}]+[^\p{L}]+[\p{L}]+|\p{Ll}\p{Lu}/u.test(name.trim());
+  const named = /\p{L}[^\p{L}]+\p{L}|\p{Ll}\p{Lu}/u.test(name.trim());
   return named || cells.length < 4 || new Set(cells).size < cells.length;
 }
 

@@ -38,7 +38,7 @@ const PREFIXES: Record<string, number> = { k: 1, kilo: 1, m: 2, mega: 2, g: 3, g
  * @returns the unit, or null where the text is none; a milliwatt is none
  */
 export function readUnit(text: string): ReadUnit | null {
-  const stripped = text.replace(/\s*\/\s*(?:\d+\s*)?(?:min|minutes?|h|hour|interval|period)$/i, '');
+  const stripped = text.replace(/(?<!\s)\s*\/\s*(?:\d+\s*)?(?:min|minutes?|h|hour|interval|period)$/i, '');
   const perTime = stripped !== text;
   const bare = stripped.replace(/[\s.·⋅*-]/g, '');
   const parts = SYMBOL.exec(bare.toLowerCase()) ?? SPELLED.exec(bare.toLowerCase());

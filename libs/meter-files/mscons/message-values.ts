@@ -97,7 +97,8 @@ export class MessageValues {
       this.#problems.add({ code: 'bad-number', row, column: 2, expected: 'a number', found: shown(text) });
       return;
     }
-    const value = qualifier === UNUSABLE ? Number.NaN : Number(text.replace(',', '.'));
+    // a negative zero is a zero
+    const value = qualifier === UNUSABLE ? Number.NaN : Number(text.replace(',', '.')) + 0;
     if (this.#open(unit, row)) this.#pending = { value, row, begin: null, end: null, reading: null };
   }
 

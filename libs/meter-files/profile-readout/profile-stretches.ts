@@ -107,7 +107,7 @@ export class ProfileStretches {
 
   #number(text: string, row: number, column: number): number {
     const bare = text.replace(/\*[A-Za-z]+$/, '');
-    if (VALUE.test(bare)) return Number(bare);
+    if (VALUE.test(bare)) return Number(bare) + 0;
     if (!/^-*(?:\.-*)?$/.test(bare)) {
       this.#problems.add({ code: 'bad-number', row, column, expected: 'a number', found: shown(text) });
     }
