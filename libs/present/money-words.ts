@@ -3,6 +3,9 @@ import { formatFixed, formatNumber, formatQuantity, GAP } from './format-number.
 import { formatDate } from './local-stamp.js';
 import { plainName } from './plain-name.js';
 
+/** A tariff as it is being typed may say anything; more decimals than these are not printed. */
+const MOST_DECIMALS = 6;
+
 /** What every saving is called. */
 export const NO_GUARANTEE = 'an estimate, not a guarantee';
 
@@ -25,7 +28,7 @@ export function formatMoney(value: number | null, currency: string, decimals = 0
  * @returns 2 where the tariff does not say, or leaves its lines unrounded
  */
 export function billDecimals({ tariff }: MoneyPapers): number {
-  return tariff?.decimals ?? 2;
+  return Math.min(Math.max(tariff?.decimals ?? 2, 0), MOST_DECIMALS);
 }
 
 /**
