@@ -29,8 +29,11 @@ function siteOf(random: Chance, parts: Partial<Site> = {}): Site {
   });
 }
 
+/** Twelve of these are the days a record needs to be planned on. */
+const INTERVAL_S = 86_400;
+
 function assessed(site: Site, seed: number): Result {
-  const record = madeRecord(driftingLoad(chance(seed), 12, 500, 0.8));
+  const record = madeRecord({ ...driftingLoad(chance(seed), 12, 500, 0.8), intervalS: INTERVAL_S });
   return assessBank(site, record, UTC_TABLE).result;
 }
 

@@ -28,6 +28,8 @@ const SITES = runs(500, 10_000);
 /** One site in so many has a network of several buses. */
 const NETWORK_EVERY = 8;
 const ORDERS_H = [5, 7, 11, 13];
+/** Eight of these are the days a record needs to be planned on. */
+const INTERVAL_S = 2 * 86_400;
 
 function madeLoads(random: Chance, buses: string[]): Site['loads'] {
   const dirty = random.oneOf([0.1, 0.3, 1]);
@@ -117,7 +119,7 @@ function objectionsTo(outcome: Outcome): Objections {
 
 function oneBusObjections(random: Chance): Objections {
   const site = oneBusSite(random);
-  const record = madeRecord(driftingLoad(random, 8, random.between(100, 600), 0.8));
+  const record = madeRecord({ ...driftingLoad(random, 8, random.between(100, 600), 0.8), intervalS: INTERVAL_S });
   return objectionsTo(assessBank(site, record, UTC_TABLE));
 }
 
@@ -221,7 +223,7 @@ describe(`verdicts on ${SITES} generated sites (seed ${SEED})`, () => {
     for (let k = 1; k < 40; k++) {
       const random = chance(SEED + 104_729 * k);
       const site = oneBusSite(random);
-      const record = madeRecord(driftingLoad(random, 8, 300, 0.8));
+      const record = madeRecord({ ...driftingLoad(random, 8, 300, 0.8), intervalS: INTERVAL_S });
       const outcome = assessBank(site, record, UTC_TABLE);
       if (outcome.result.verdict !== 'clear') continue;
       const distorting = outcome.site.loads.distorting!.map((load) => ({
