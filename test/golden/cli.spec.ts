@@ -217,7 +217,6 @@ describe('the program ends with', () => {
     ['no command', []],
     ['an unknown command', ['design', '--json']],
     ['no file', ['plan', '--json']],
-    ['no record', ['plan', 'site.json', '--json']],
     ['an unknown option', ['plan', 'site.json', '--loud', '--json']],
     ['stdin twice', ['plan', '-', '--load', '-', '--json']],
     ['orders that run backwards', ['scan', 'site.json', '--orders', '50:1:1', '--json']],
@@ -229,6 +228,12 @@ describe('the program ends with', () => {
     expect(code).toBe(2);
     expect(stderr).not.toBe('');
     if (args.includes('--json')) expect(JSON.parse(stdout).error.code).toBe('usage');
+  });
+
+  it('2 for neither a record nor an estimate in the site file', () => {
+    const { code, stdout } = work.run(['plan', work.file(site()), '--json']);
+    expect(code).toBe(2);
+    expect(JSON.parse(stdout).error).toMatchObject({ code: 'usage', problems: [{ found: 'none' }] });
   });
 
   it('2 where the proposal cannot be written, before anything is computed', () => {

@@ -102,6 +102,7 @@ async function layoutOf(buffer: RowBuffer, { map = {} }: ReadOptions): Promise<C
     if (buffer.ended) break;
     dropRows(buffer);
     await buffer.more();
+    buffer.refuseEndlessTail();
   }
   if (tabular) {
     const expected = 'a header row that names the columns, or a map that numbers them';

@@ -69,6 +69,16 @@ export class RowBuffer {
     ]);
   }
 
+  /** Refuses a last row that has grown longer than a row can be, before anything is looked for in it. */
+  refuseEndlessTail(): void {
+    const from = Math.max(this.start, this.bytes.lastIndexOf(this.rowEnd, this.end - 1) + 1);
+    if (this.end - from <= LONGEST_ROW_BYTES) return;
+    let row = this.rowsBefore + 1;
+    for (let at = this.start; at < from; at++) if (this.bytes[at] === this.rowEnd) row++;
+    const expected = `a row of at most ${LONGEST_ROW_BYTES} bytes`;
+    throw new InputProblem([{ code: 'too-large', row, expected, found: 'a longer one' }]);
+  }
+
   #append(chunk: Uint8Array): void {
     const kept = this.end - this.start;
     this.#gotBytes += chunk.length;
