@@ -101,8 +101,7 @@ async function layoutOf(buffer: RowBuffer, { map = {} }: ReadOptions): Promise<C
     tabular ||= looksTabular(buffer);
     if (buffer.ended) break;
     dropRows(buffer);
-    await buffer.more();
-    buffer.refuseEndlessTail();
+    await moreRows(buffer);
   }
   if (tabular) {
     const expected = 'a header row that names the columns, or a map that numbers them';
@@ -110,6 +109,15 @@ async function layoutOf(buffer: RowBuffer, { map = {} }: ReadOptions): Promise<C
   }
   const expected = 'a meter file: delimited text under a header row, or NEM12';
   throw new InputProblem([{ code: 'unknown-format', expected, found: 'a file without a row of column names' }]);
+}
+
+/** Reads on until a further row is whole: in a row that only grows there is nothing new to look for. */
+async function moreRows(buffer: RowBuffer): Promise<void> {
+  const before = buffer.end - buffer.start;
+  do {
+    if (!(await buffer.more())) return;
+    buffer.refuseEndlessTail();
+  } while (buffer.bytes.lastIndexOf(buffer.rowEnd, buffer.end - 1) < buffer.start + before);
 }
 
 /** Too little to look for a header in, or not one whole row. */
