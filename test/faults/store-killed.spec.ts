@@ -72,9 +72,12 @@ for (const { name, available, create } of databases) {
       await untilRunning(first, job.links.self);
       expect(await first.end('SIGTERM')).toBe(0);
       const second = await start();
+      // taken over at once, however long it then takes: a job whose server died waits out its heartbeat
       const beganMs = Date.now();
+      while ((await second.ask('GET', job.links.self)).body.attempt < 2)
+        await new Promise((done) => setTimeout(done, 50));
+      expect(Date.now() - beganMs).toBeLessThan(5000);
       await (await fetch(second.base + job.links.events)).text();
-      expect(Date.now() - beganMs).toBeLessThan(9000);
       expect((await second.ask('GET', job.links.self)).body).toMatchObject({ state: 'done', attempt: 2, revision: 2 });
       await second.end('SIGTERM');
     });
