@@ -68,7 +68,7 @@ describe('a site with an estimate', () => {
     expect(JSON.parse(stdout).error).toMatchObject({
       code: 'inconsistent',
       path: 'estimate.bills[0].maxKw',
-      unit: 'kW',
+      problems: [{ unit: 'kW' }],
     });
     expect(stderr).toContain(file);
   });
