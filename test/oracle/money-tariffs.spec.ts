@@ -63,9 +63,9 @@ describe('Malaysia, surcharge on the bill', () => {
 });
 
 /*
- * Mexico: recargo 60·(0.9/FP − 1) up to 120 %, bonificación 25·(1 − 0.9/FP) up to 2.5 %, to one decimal. An industrial
- * bill of January 2004 in lecture notes on power factor (331 383.84 + 87 151.61 for energy and demand), and the
- * bonus of a bill at 97.83 % (blog.sunwise.io).
+ * Mexico: recargo 60·(0.9/FP − 1) up to 120 %, bonificación 25·(1 − 0.9/FP) up to 2.5 %, to one decimal: the federal
+ * utility's general rules of application, from memory. An industrial bill of January 2004 published as a worked example
+ * (331 383.84 + 87 151.61 for energy and demand), and the bonus of a published bill at 97.83 %.
  */
 describe('Mexico, surcharge and bonus', () => {
   const scale: Scale = {
