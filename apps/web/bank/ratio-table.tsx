@@ -2,6 +2,7 @@ import type { ReactorTrial } from '#libs/engine/index.js';
 import { formatNumber, formatQuantity, formatRange } from '#libs/present/format-number.js';
 import { bankOf } from '../desk/desk-state.js';
 import { useDesk } from '../desk/use-desk.js';
+import { ScrollTable } from '../draw/scroll-table.js';
 import { VerdictWords } from '../draw/verdict-mark.js';
 import { latestResult } from '../line/latest-result.js';
 import { withRatio } from './stage-edits.js';
@@ -15,46 +16,43 @@ export function RatioTable() {
     <section className="section" aria-labelledby="ratios">
       <h2 id="ratios">The same stages at other reactor ratios</h2>
       <p className="caption">One row is one bank, judged at every level and corner. Choose a row to put it in place.</p>
-      {/* biome-ignore lint/a11y/noNoninteractiveTabindex: a table that scrolls must be reached by keyboard */}
-      <section className="table" tabIndex={0} aria-label="Reactor ratios">
-        <table>
-          <thead>
-            <tr>
-              <th scope="col">reactors, rating</th>
-              <th scope="col" className="right">
-                tuned order
-              </th>
-              <th scope="col" className="right">
-                peaks
-              </th>
-              <th scope="col">verdict, nearest its limit</th>
-              <th scope="col">
-                <span className="hidden">put in place</span>
-              </th>
+      <ScrollTable name="Reactor ratios">
+        <thead>
+          <tr>
+            <th scope="col">reactors, rating</th>
+            <th scope="col" className="right">
+              tuned order
+            </th>
+            <th scope="col" className="right">
+              peaks
+            </th>
+            <th scope="col">verdict, nearest its limit</th>
+            <th scope="col">
+              <span className="hidden">put in place</span>
+            </th>
+          </tr>
+        </thead>
+        <tbody>
+          {rows.map((row) => (
+            <tr key={row.reactorPct} className={row.chosen ? 'own' : undefined}>
+              <TrialCells row={row} />
+              <td>
+                {row.chosen || bank === null ? (
+                  'as it stands'
+                ) : (
+                  <button
+                    type="button"
+                    className="way"
+                    onClick={() => desk.tryBank(withRatio(bank, row.reactorPct, row.ratedV))}
+                  >
+                    Put in place<span className="hidden"> {ratioWords(row.reactorPct)}</span>
+                  </button>
+                )}
+              </td>
             </tr>
-          </thead>
-          <tbody>
-            {rows.map((row) => (
-              <tr key={row.reactorPct} className={row.chosen ? 'own' : undefined}>
-                <TrialCells row={row} />
-                <td>
-                  {row.chosen || bank === null ? (
-                    'as it stands'
-                  ) : (
-                    <button
-                      type="button"
-                      className="way"
-                      onClick={() => desk.tryBank(withRatio(bank, row.reactorPct, row.ratedV))}
-                    >
-                      Put in place<span className="hidden"> {ratioWords(row.reactorPct)}</span>
-                    </button>
-                  )}
-                </td>
-              </tr>
-            ))}
-          </tbody>
-        </table>
-      </section>
+          ))}
+        </tbody>
+      </ScrollTable>
       {rows.length > 0 ? null : (
         <p className="caption">
           {isMixed(bank)

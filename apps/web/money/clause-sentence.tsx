@@ -1,7 +1,7 @@
 import type { Clause } from '#libs/engine/index.js';
 import { useDesk } from '../desk/use-desk.js';
-import { valueAt } from '../field/document-path.js';
 import { ChoiceField } from '../field/choice-field.js';
+import { valueAt } from '../field/document-path.js';
 import { QuantityField } from '../field/quantity-field.js';
 import { TextField } from '../field/text-field.js';
 import { PriceByWindow } from './price-by-window.js';

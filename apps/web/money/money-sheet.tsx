@@ -12,6 +12,7 @@ import {
 } from '#libs/present/money-words.js';
 import { useDesk } from '../desk/use-desk.js';
 import { Plot } from '../draw/plot.js';
+import { ScrollTable } from '../draw/scroll-table.js';
 import { latestResult } from '../line/latest-result.js';
 import { Headline } from '../working/headline.js';
 import { MonthBill } from './month-bill.js';
@@ -100,36 +101,33 @@ function CapitalTable({ money, currency }: { money: PricedMoney; currency: strin
       <p className="caption">
         {`Maintenance ${formatMoney(running.maintenancePerYear, currency)} and losses ${formatMoney(running.lossPerYear, currency)} a year.`}
       </p>
-      {/* biome-ignore lint/a11y/noNoninteractiveTabindex: a table that scrolls must be reached by keyboard */}
-      <section className="table" tabIndex={0} aria-label="Items of the capital">
-        <table>
-          <thead>
-            <tr>
-              <th scope="col">item</th>
-              <th scope="col">working</th>
-              <th scope="col" className="right">
-                {currency}
-              </th>
+      <ScrollTable name="Items of the capital">
+        <thead>
+          <tr>
+            <th scope="col">item</th>
+            <th scope="col">working</th>
+            <th scope="col" className="right">
+              {currency}
+            </th>
+          </tr>
+        </thead>
+        <tbody>
+          {capital.lines.map(({ item, working, amount }) => (
+            <tr key={item}>
+              <th scope="row">{item}</th>
+              <td className="told">{working}</td>
+              <td className="right">{formatFixed(amount, 0)}</td>
             </tr>
-          </thead>
-          <tbody>
-            {capital.lines.map(({ item, working, amount }) => (
-              <tr key={item}>
-                <th scope="row">{item}</th>
-                <td className="told">{working}</td>
-                <td className="right">{formatFixed(amount, 0)}</td>
-              </tr>
-            ))}
-            <tr>
-              <th scope="row">together</th>
-              <td />
-              <td className="right">
-                <b>{formatFixed(capital.total, 0)}</b>
-              </td>
-            </tr>
-          </tbody>
-        </table>
-      </section>
+          ))}
+          <tr>
+            <th scope="row">together</th>
+            <td />
+            <td className="right">
+              <b>{formatFixed(capital.total, 0)}</b>
+            </td>
+          </tr>
+        </tbody>
+      </ScrollTable>
     </section>
   );
 }

@@ -3,6 +3,7 @@ import type { BillLine, Money, MoneyPapers } from '#libs/engine/index.js';
 import { formatFixed, formatQuantity } from '#libs/present/format-number.js';
 import { formatMonth } from '#libs/present/local-stamp.js';
 import { billDecimals, formatMoney } from '#libs/present/money-words.js';
+import { ScrollTable } from '../draw/scroll-table.js';
 
 /** A working by the hour holds thousands of terms; beyond this the rest is left out. */
 const LONGEST = 600;
@@ -33,47 +34,44 @@ export function MonthBill({ bills, papers }: { bills: Money['bills']; papers: Mo
         </label>
       </div>
       <p className="caption">{`Every line with its working, ${papers.currency}.${month.partial ? ' The record holds a part of this month.' : ''}`}</p>
-      {/* biome-ignore lint/a11y/noNoninteractiveTabindex: a table that scrolls must be reached by keyboard */}
-      <section className="table" tabIndex={0} aria-label="Lines of the bill">
-        <table>
-          <thead>
-            <tr>
-              <th scope="col">clause and working</th>
-              <th scope="col" className="right">
-                before
-              </th>
-              <th scope="col" className="right">
-                after
-              </th>
-              <th scope="col" className="right">
-                saved
-              </th>
-            </tr>
-          </thead>
-          <tbody>
-            {month.lines.map((line, k) => (
-              <Fragment key={line.clause}>
-                <tr className="headed">
-                  <th scope="row">{line.clause}</th>
-                  <td className="right">{amount(line.amount)}</td>
-                  <td className="right">{amount(left.lines[k]!.amount)}</td>
-                  <td className="right">{amount(line.amount - left.lines[k]!.amount)}</td>
-                </tr>
-                <tr>
-                  <td colSpan={4}>
-                    <Working name="before" line={line} />
-                    <Working name="after" line={left.lines[k]!} />
-                  </td>
-                </tr>
-              </Fragment>
-            ))}
-            {month.tax === 0 && left.tax === 0 ? null : (
-              <Sum name="tax" before={month.tax} after={left.tax} amount={amount} />
-            )}
-            <Sum name="together" before={month.total} after={left.total} amount={amount} />
-          </tbody>
-        </table>
-      </section>
+      <ScrollTable name="Lines of the bill">
+        <thead>
+          <tr>
+            <th scope="col">clause and working</th>
+            <th scope="col" className="right">
+              before
+            </th>
+            <th scope="col" className="right">
+              after
+            </th>
+            <th scope="col" className="right">
+              saved
+            </th>
+          </tr>
+        </thead>
+        <tbody>
+          {month.lines.map((line, k) => (
+            <Fragment key={line.clause}>
+              <tr className="headed">
+                <th scope="row">{line.clause}</th>
+                <td className="right">{amount(line.amount)}</td>
+                <td className="right">{amount(left.lines[k]!.amount)}</td>
+                <td className="right">{amount(line.amount - left.lines[k]!.amount)}</td>
+              </tr>
+              <tr>
+                <td colSpan={4}>
+                  <Working name="before" line={line} />
+                  <Working name="after" line={left.lines[k]!} />
+                </td>
+              </tr>
+            </Fragment>
+          ))}
+          {month.tax === 0 && left.tax === 0 ? null : (
+            <Sum name="tax" before={month.tax} after={left.tax} amount={amount} />
+          )}
+          <Sum name="together" before={month.total} after={left.total} amount={amount} />
+        </tbody>
+      </ScrollTable>
       {month.billed === null ? null : (
         <p className="caption">
           {`The real bill was ${amount(month.billed)}; the reckoned one differs by ${amount(month.difference ?? 0)}.`}

@@ -2,6 +2,7 @@ import { Fragment } from 'react';
 import type { Alternative, Money, MoneyPapers } from '#libs/engine/index.js';
 import { formatFixed, formatNumber, formatQuantity } from '#libs/present/format-number.js';
 import { namedPicks, proofWords } from '#libs/present/money-words.js';
+import { ScrollTable } from '../draw/scroll-table.js';
 import { VerdictWords } from '../draw/verdict-mark.js';
 
 /** Doing nothing, keeping today's bank and the new one beside each other, with the reasons between them. */
@@ -23,45 +24,42 @@ export function PicksTable({ money, papers }: { money: Money; papers: MoneyPaper
         {`Net present value against doing nothing, ${papers.currency}. `}
         {money.proof === null ? '' : proofWords(money.proof, papers.currency)}
       </p>
-      {/* biome-ignore lint/a11y/noNoninteractiveTabindex: a table that scrolls must be reached by keyboard */}
-      <section className="table" tabIndex={0} aria-label="The ways that were weighed">
-        <table>
-          <thead>
-            <tr>
-              <th scope="col">way, and why</th>
-              {['capital', 'value', 'kvarh left', 'switchings', 'distortion'].map((head) => (
-                <th key={head} scope="col" className="right">
-                  {head}
-                </th>
-              ))}
-              <th scope="col">target</th>
-              <th scope="col">verdict</th>
-            </tr>
-          </thead>
-          <tbody>
-            {picks.map(({ name, way, reason, isRecommended }) => (
-              <Fragment key={name}>
-                <tr className={isRecommended ? 'headed own' : 'headed'}>
-                  <th scope="row">{name}</th>
+      <ScrollTable name="The ways that were weighed">
+        <thead>
+          <tr>
+            <th scope="col">way, and why</th>
+            {['capital', 'value', 'kvarh left', 'switchings', 'distortion'].map((head) => (
+              <th key={head} scope="col" className="right">
+                {head}
+              </th>
+            ))}
+            <th scope="col">target</th>
+            <th scope="col">verdict</th>
+          </tr>
+        </thead>
+        <tbody>
+          {picks.map(({ name, way, reason, isRecommended }) => (
+            <Fragment key={name}>
+              <tr className={isRecommended ? 'headed own' : 'headed'}>
+                <th scope="row">{name}</th>
+                <WayCells way={way} />
+              </tr>
+              <Told words={reason} />
+            </Fragment>
+          ))}
+          {money.alternatives
+            .filter(({ sample }) => sample)
+            .map((way) => (
+              <Fragment key={way.name}>
+                <tr className="headed">
+                  <th scope="row">{way.name}</th>
                   <WayCells way={way} />
                 </tr>
-                <Told words={reason} />
+                <Told words="A sample of those simulated whole." />
               </Fragment>
             ))}
-            {money.alternatives
-              .filter(({ sample }) => sample)
-              .map((way) => (
-                <Fragment key={way.name}>
-                  <tr className="headed">
-                    <th scope="row">{way.name}</th>
-                    <WayCells way={way} />
-                  </tr>
-                  <Told words="A sample of those simulated whole." />
-                </Fragment>
-              ))}
-          </tbody>
-        </table>
-      </section>
+        </tbody>
+      </ScrollTable>
     </section>
   );
 }

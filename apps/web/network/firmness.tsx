@@ -2,6 +2,7 @@ import type { Robustness, StandingRange } from '#libs/engine/index.js';
 import { formatNumber, GAP } from '#libs/present/format-number.js';
 import { verdictWords } from '#libs/present/verdict-words.js';
 import { useDesk } from '../desk/use-desk.js';
+import { ScrollTable } from '../draw/scroll-table.js';
 import { latestResult } from '../line/latest-result.js';
 
 /** How far each uncertain quantity may move before the verdict does. */
@@ -13,27 +14,24 @@ export function Firmness() {
     <section className="section" aria-labelledby="firmness">
       <h2 id="firmness">{heading(robustness)}</h2>
       <p className="caption">Each quantity moved by itself, times its own value, until the verdict is another one.</p>
-      {/* biome-ignore lint/a11y/noNoninteractiveTabindex: a table that scrolls must be reached by keyboard */}
-      <section className="table" tabIndex={0} aria-label="How firm the verdict is">
-        <table>
-          <thead>
-            <tr>
-              <th scope="col">moved</th>
-              <th scope="col">stands down to</th>
-              <th scope="col">stands up to</th>
+      <ScrollTable name="How firm the verdict is">
+        <thead>
+          <tr>
+            <th scope="col">moved</th>
+            <th scope="col">stands down to</th>
+            <th scope="col">stands up to</th>
+          </tr>
+        </thead>
+        <tbody>
+          {robustness.ranges.map((range) => (
+            <tr key={range.quantity}>
+              <th scope="row">{range.quantity}</th>
+              <td>{endWords(range.lowFactor, range.leastTried, range.verdictBelow)}</td>
+              <td>{endWords(range.highFactor, range.mostTried, range.verdictAbove)}</td>
             </tr>
-          </thead>
-          <tbody>
-            {robustness.ranges.map((range) => (
-              <tr key={range.quantity}>
-                <th scope="row">{range.quantity}</th>
-                <td>{endWords(range.lowFactor, range.leastTried, range.verdictBelow)}</td>
-                <td>{endWords(range.highFactor, range.mostTried, range.verdictAbove)}</td>
-              </tr>
-            ))}
-          </tbody>
-        </table>
-      </section>
+          ))}
+        </tbody>
+      </ScrollTable>
     </section>
   );
 }

@@ -1,6 +1,7 @@
 import type { Chart, Mark } from '#libs/present/chart.js';
 import { useDesk } from '../desk/use-desk.js';
 import { ChartFigure } from '../draw/chart-figure.js';
+import { ScrollTable } from '../draw/scroll-table.js';
 import { latestResult } from '../line/latest-result.js';
 import { marginPicture } from './margin-picture.js';
 
@@ -14,44 +15,41 @@ export function MarginTable({ chart, isPickable = false }: { chart: Chart; isPic
   const picked = isPickable ? pickedRow(levels, state.picks.levelKvar) : -1;
   return (
     <ChartFigure figure={chart} steps={false} picture={() => marginPicture(chart)}>
-      {/* biome-ignore lint/a11y/noNoninteractiveTabindex: a table that scrolls must be reached by keyboard */}
-      <section className="map" tabIndex={0} aria-label={`Map: ${chart.finding}`}>
-        <table>
-          <thead>
-            <tr>
-              {chart.table.columns.map(({ head }) => (
-                <th key={head} scope="col">
-                  {head}
-                </th>
+      <ScrollTable look="map" name={`Map: ${chart.finding}`}>
+        <thead>
+          <tr>
+            {chart.table.columns.map(({ head }) => (
+              <th key={head} scope="col">
+                {head}
+              </th>
+            ))}
+          </tr>
+        </thead>
+        <tbody>
+          {chart.table.rows.map((row, at) => (
+            <tr key={row[0]} className={at === picked ? 'picked' : undefined}>
+              <th scope="row">
+                {isPickable ? (
+                  <button
+                    type="button"
+                    aria-pressed={at === picked}
+                    onClick={() => desk.pick({ levelKvar: levels[at] ?? null })}
+                  >
+                    {row[0]}
+                  </button>
+                ) : (
+                  row[0]
+                )}
+              </th>
+              {row.slice(1).map((text, column) => (
+                <td key={column} className={cells.find((cell) => cell.row === at && cell.column === column)?.fill}>
+                  <span>{text}</span>
+                </td>
               ))}
             </tr>
-          </thead>
-          <tbody>
-            {chart.table.rows.map((row, at) => (
-              <tr key={row[0]} className={at === picked ? 'picked' : undefined}>
-                <th scope="row">
-                  {isPickable ? (
-                    <button
-                      type="button"
-                      aria-pressed={at === picked}
-                      onClick={() => desk.pick({ levelKvar: levels[at] ?? null })}
-                    >
-                      {row[0]}
-                    </button>
-                  ) : (
-                    row[0]
-                  )}
-                </th>
-                {row.slice(1).map((text, column) => (
-                  <td key={column} className={cells.find((cell) => cell.row === at && cell.column === column)?.fill}>
-                    <span>{text}</span>
-                  </td>
-                ))}
-              </tr>
-            ))}
-          </tbody>
-        </table>
-      </section>
+          ))}
+        </tbody>
+      </ScrollTable>
       <MapLegend />
     </ChartFigure>
   );

@@ -3,6 +3,7 @@ import { NO_PERMISSION } from '#libs/present/verdict-words.js';
 import type { RevisionHeadShown } from '../api/shown.js';
 import { isChanged, staleFrom } from '../desk/desk-state.js';
 import { useDesk } from '../desk/use-desk.js';
+import { ScrollTable } from '../draw/scroll-table.js';
 import { VerdictWords } from '../draw/verdict-mark.js';
 import { valueAt } from '../field/document-path.js';
 import { Headline } from '../working/headline.js';
@@ -87,37 +88,34 @@ export function ProposalSheet() {
 
 function Revisions({ revisions }: { revisions: readonly RevisionHeadShown[] }) {
   return (
-    // biome-ignore lint/a11y/noNoninteractiveTabindex: a table that scrolls must be reached by keyboard
-    <section className="table" tabIndex={0} aria-label="Revisions">
-      <table>
-        <thead>
-          <tr>
-            {['revision', 'made', 'what', 'verdict', 'paper'].map((head) => (
-              <th key={head} scope="col">
-                {head}
-              </th>
-            ))}
-          </tr>
-        </thead>
-        <tbody>
-          {revisions.map((one) => (
-            <tr key={one.revision}>
-              <th scope="row">{one.revision}</th>
-              <td className="nowrap">{one.createdAt.slice(0, 16).replace('T', ' ')} UTC</td>
-              <td>
-                {one.kind === 'plan' ? 'Proposed' : 'Judged'}: {one.proposed}
-              </td>
-              <td>
-                <VerdictWords verdict={one.verdict} />
-              </td>
-              <td>
-                <a href={one.links.proposal}>PDF</a>
-              </td>
-            </tr>
+    <ScrollTable name="Revisions">
+      <thead>
+        <tr>
+          {['revision', 'made', 'what', 'verdict', 'paper'].map((head) => (
+            <th key={head} scope="col">
+              {head}
+            </th>
           ))}
-        </tbody>
-      </table>
-    </section>
+        </tr>
+      </thead>
+      <tbody>
+        {revisions.map((one) => (
+          <tr key={one.revision}>
+            <th scope="row">{one.revision}</th>
+            <td className="nowrap">{one.createdAt.slice(0, 16).replace('T', ' ')} UTC</td>
+            <td>
+              {one.kind === 'plan' ? 'Proposed' : 'Judged'}: {one.proposed}
+            </td>
+            <td>
+              <VerdictWords verdict={one.verdict} />
+            </td>
+            <td>
+              <a href={one.links.proposal}>PDF</a>
+            </td>
+          </tr>
+        ))}
+      </tbody>
+    </ScrollTable>
   );
 }
 

@@ -4,6 +4,7 @@ import { zoneTable } from '#libs/contract/time-zone.js';
 import type { RecordOverlap } from '#libs/engine/index.js';
 import { formatNumber, formatQuantity } from '#libs/present/format-number.js';
 import { formatMoment } from '#libs/present/local-stamp.js';
+import { ScrollTable } from '../draw/scroll-table.js';
 
 const MOST_SPANS = 12;
 
@@ -59,9 +60,8 @@ function Disagreements({ overlap, timeZone }: { overlap: RecordOverlap; timeZone
   const { spans, spanCount } = overlap;
   const zone = zoneTable(timeZone, spans[0]!.beginS, spans.at(-1)!.endS);
   return (
-    // biome-ignore lint/a11y/noNoninteractiveTabindex: a table that scrolls must be reached by keyboard
-    <section className="table" tabIndex={0} aria-label="Where they disagree">
-      <table>
+    <>
+      <ScrollTable name="Where they disagree">
         <thead>
           <tr>
             <th scope="col">from</th>
@@ -80,11 +80,11 @@ function Disagreements({ overlap, timeZone }: { overlap: RecordOverlap; timeZone
             </tr>
           ))}
         </tbody>
-      </table>
+      </ScrollTable>
       {spanCount > MOST_SPANS ? (
         <p className="caption">and {formatNumber(spanCount - MOST_SPANS, 'given')} spans more</p>
       ) : null}
-    </section>
+    </>
   );
 }
 

@@ -5,6 +5,7 @@ import { remarkConsequence } from '#libs/present/remark-words.js';
 import { NO_PERMISSION } from '#libs/present/verdict-words.js';
 import { siteAddress } from '../address.js';
 import { useDesk } from '../desk/use-desk.js';
+import { ScrollTable } from '../draw/scroll-table.js';
 import { VerdictWords } from '../draw/verdict-mark.js';
 import { Headline } from '../working/headline.js';
 
@@ -62,30 +63,27 @@ function MonthTable({ result }: { result: EstimateResult }) {
   const { months } = result.estimate;
   if (months.length === 0) return null;
   return (
-    // biome-ignore lint/a11y/noNoninteractiveTabindex: a table that scrolls must be reached by keyboard
-    <section className="table" tabIndex={0} aria-label="Bounds by bill, estimated">
-      <table>
-        <thead>
-          <tr>
-            <th scope="col">bill</th>
-            <th scope="col">power factor</th>
-            <th scope="col">greatest demand</th>
-            <th scope="col">lower bound</th>
-            <th scope="col">upper bound</th>
+    <ScrollTable name="Bounds by bill, estimated">
+      <thead>
+        <tr>
+          <th scope="col">bill</th>
+          <th scope="col">power factor</th>
+          <th scope="col">greatest demand</th>
+          <th scope="col">lower bound</th>
+          <th scope="col">upper bound</th>
+        </tr>
+      </thead>
+      <tbody>
+        {months.map(({ month, powerFactorLagging, maxKw, lowerKvar, upperKvar }) => (
+          <tr key={month}>
+            <th scope="row">{formatMonth(month)}</th>
+            <td>{formatNumber(powerFactorLagging)}</td>
+            <td>{formatQuantity(maxKw, 'kW')}</td>
+            <td>{formatQuantity(lowerKvar, 'kvar')}</td>
+            <td>{formatQuantity(upperKvar, 'kvar')}</td>
           </tr>
-        </thead>
-        <tbody>
-          {months.map(({ month, powerFactorLagging, maxKw, lowerKvar, upperKvar }) => (
-            <tr key={month}>
-              <th scope="row">{formatMonth(month)}</th>
-              <td>{formatNumber(powerFactorLagging)}</td>
-              <td>{formatQuantity(maxKw, 'kW')}</td>
-              <td>{formatQuantity(lowerKvar, 'kvar')}</td>
-              <td>{formatQuantity(upperKvar, 'kvar')}</td>
-            </tr>
-          ))}
-        </tbody>
-      </table>
-    </section>
+        ))}
+      </tbody>
+    </ScrollTable>
   );
 }

@@ -5,6 +5,7 @@ import { formatNumber, formatQuantity } from '#libs/present/format-number.js';
 import { gradeWords, MONTH_HEADS, monthCells, qualityRows } from '#libs/present/quality-words.js';
 import { remarkConsequence, remarkSentence } from '#libs/present/remark-words.js';
 import type { RecordShown } from '../api/shown.js';
+import { ScrollTable } from '../draw/scroll-table.js';
 
 /** How good the reading is, what its values ask, and what the reader decided, repaired or left out. */
 export function ReadingFindings({ record, timeZone }: { record: RecordShown; timeZone: string }) {
@@ -53,19 +54,16 @@ function rowsOf({ quality, record, file }: RecordShown, zone: ZoneTable): [strin
 
 function ReadingTable({ rows }: { rows: [string, string][] }) {
   return (
-    // biome-ignore lint/a11y/noNoninteractiveTabindex: a table that scrolls must be reached by keyboard
-    <section className="table" tabIndex={0} aria-label="The reading">
-      <table>
-        <tbody>
-          {rows.map(([name, text]) => (
-            <tr key={name}>
-              <th scope="row">{name}</th>
-              <td className="right">{text}</td>
-            </tr>
-          ))}
-        </tbody>
-      </table>
-    </section>
+    <ScrollTable name="The reading">
+      <tbody>
+        {rows.map(([name, text]) => (
+          <tr key={name}>
+            <th scope="row">{name}</th>
+            <td className="right">{text}</td>
+          </tr>
+        ))}
+      </tbody>
+    </ScrollTable>
   );
 }
 
@@ -73,35 +71,32 @@ function CoverageTable({ record: { quality } }: { record: RecordShown }) {
   return (
     <section className="section" aria-labelledby="coverage">
       <h2 id="coverage">How much of each month is there</h2>
-      {/* biome-ignore lint/a11y/noNoninteractiveTabindex: a table that scrolls must be reached by keyboard */}
-      <section className="table" tabIndex={0} aria-label="Coverage by month">
-        <table>
-          <thead>
-            <tr>
-              {MONTH_HEADS.map((head, at) => (
-                <th key={head} scope="col" className={at === 0 ? undefined : 'right'}>
-                  {head}
-                </th>
-              ))}
-            </tr>
-          </thead>
-          <tbody>
-            {quality.months.map((month) => {
-              const [name, ...cells] = monthCells(month);
-              return (
-                <tr key={month.month}>
-                  <th scope="row">{name}</th>
-                  {cells.map((cell, at) => (
-                    <td key={MONTH_HEADS[at + 1]} className="right">
-                      {cell}
-                    </td>
-                  ))}
-                </tr>
-              );
-            })}
-          </tbody>
-        </table>
-      </section>
+      <ScrollTable name="Coverage by month">
+        <thead>
+          <tr>
+            {MONTH_HEADS.map((head, at) => (
+              <th key={head} scope="col" className={at === 0 ? undefined : 'right'}>
+                {head}
+              </th>
+            ))}
+          </tr>
+        </thead>
+        <tbody>
+          {quality.months.map((month) => {
+            const [name, ...cells] = monthCells(month);
+            return (
+              <tr key={month.month}>
+                <th scope="row">{name}</th>
+                {cells.map((cell, at) => (
+                  <td key={MONTH_HEADS[at + 1]} className="right">
+                    {cell}
+                  </td>
+                ))}
+              </tr>
+            );
+          })}
+        </tbody>
+      </ScrollTable>
     </section>
   );
 }

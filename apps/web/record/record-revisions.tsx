@@ -1,5 +1,6 @@
 import { formatNumber, formatQuantity } from '#libs/present/format-number.js';
 import type { RecordShown } from '../api/shown.js';
+import { ScrollTable } from '../draw/scroll-table.js';
 
 /** Every revision of the record that is looked at, the latest first: each stays as it was. */
 export function RecordRevisions({ record, records }: { record: RecordShown; records: readonly RecordShown[] }) {
@@ -8,41 +9,38 @@ export function RecordRevisions({ record, records }: { record: RecordShown; reco
   return (
     <section className="section" aria-labelledby="record-revisions">
       <h2 id="record-revisions">Every revision of the record is kept</h2>
-      {/* biome-ignore lint/a11y/noNoninteractiveTabindex: a table that scrolls must be reached by keyboard */}
-      <section className="table" tabIndex={0} aria-label="Revisions of the record">
-        <table>
-          <thead>
-            <tr>
-              <th scope="col">revision</th>
-              <th scope="col">file that was added</th>
-              <th scope="col" className="right">
-                intervals
-              </th>
-              <th scope="col" className="right">
-                missing
-              </th>
-              <th scope="col" className="right">
-                active energy
-              </th>
-              <th scope="col" className="right">
-                highest
-              </th>
+      <ScrollTable name="Revisions of the record">
+        <thead>
+          <tr>
+            <th scope="col">revision</th>
+            <th scope="col">file that was added</th>
+            <th scope="col" className="right">
+              intervals
+            </th>
+            <th scope="col" className="right">
+              missing
+            </th>
+            <th scope="col" className="right">
+              active energy
+            </th>
+            <th scope="col" className="right">
+              highest
+            </th>
+          </tr>
+        </thead>
+        <tbody>
+          {line.map(({ id, revision, file, record: summary }) => (
+            <tr key={id}>
+              <th scope="row">{revision}</th>
+              <td>{file.name ?? 'without a name'}</td>
+              <td className="right">{formatNumber(summary.intervals, 'given')}</td>
+              <td className="right">{formatNumber(summary.missing, 'given')}</td>
+              <td className="right">{formatQuantity(summary.activeKwh / 1000, 'MWh')}</td>
+              <td className="right">{formatQuantity(summary.maxKw, 'kW')}</td>
             </tr>
-          </thead>
-          <tbody>
-            {line.map(({ id, revision, file, record: summary }) => (
-              <tr key={id}>
-                <th scope="row">{revision}</th>
-                <td>{file.name ?? 'without a name'}</td>
-                <td className="right">{formatNumber(summary.intervals, 'given')}</td>
-                <td className="right">{formatNumber(summary.missing, 'given')}</td>
-                <td className="right">{formatQuantity(summary.activeKwh / 1000, 'MWh')}</td>
-                <td className="right">{formatQuantity(summary.maxKw, 'kW')}</td>
-              </tr>
-            ))}
-          </tbody>
-        </table>
-      </section>
+          ))}
+        </tbody>
+      </ScrollTable>
     </section>
   );
 }
