@@ -1,5 +1,6 @@
 import { useDesk } from '../desk/use-desk.js';
 import { valueAt } from '../field/document-path.js';
+import { ListEntry } from '../field/list-entry.js';
 import { QuantityField } from '../field/quantity-field.js';
 import { TextField } from '../field/text-field.js';
 
@@ -48,21 +49,14 @@ function Bills() {
       </div>
       <p className="caption">Reactive energy or power factor, and the greatest demand in kW or kVA.</p>
       {list.map((_, at) => (
-        <fieldset key={at} aria-label={`Bill ${at + 1}`}>
-          <div className="fields">
-            <TextField path={`${BILLS}[${at}].month`} label="month" />
-            <QuantityField path={`${BILLS}[${at}].activeKwh`} label="active energy" unit="kWh" />
-            <QuantityField path={`${BILLS}[${at}].laggingKvarh`} label="reactive energy" unit="kvarh" />
-            <QuantityField path={`${BILLS}[${at}].powerFactor`} label="or power factor" />
-            <QuantityField path={`${BILLS}[${at}].maxKw`} label="greatest demand" unit="kW" />
-            <QuantityField path={`${BILLS}[${at}].maxKva`} label="or, in kVA" unit="kVA" />
-            <p className="row">
-              <button type="button" className="way" onClick={() => put(list.toSpliced(at, 1))}>
-                Remove
-              </button>
-            </p>
-          </div>
-        </fieldset>
+        <ListEntry key={at} name={`Bill ${at + 1}`} remove={() => put(list.toSpliced(at, 1))}>
+          <TextField path={`${BILLS}[${at}].month`} label="month" />
+          <QuantityField path={`${BILLS}[${at}].activeKwh`} label="active energy" unit="kWh" />
+          <QuantityField path={`${BILLS}[${at}].laggingKvarh`} label="reactive energy" unit="kvarh" />
+          <QuantityField path={`${BILLS}[${at}].powerFactor`} label="or power factor" />
+          <QuantityField path={`${BILLS}[${at}].maxKw`} label="greatest demand" unit="kW" />
+          <QuantityField path={`${BILLS}[${at}].maxKva`} label="or, in kVA" unit="kVA" />
+        </ListEntry>
       ))}
     </section>
   );
@@ -87,22 +81,15 @@ function Equipment() {
       </div>
       <p className="caption">Efficiency and power factor at the load each runs at, as its data sheet has them.</p>
       {list.map((_, at) => (
-        <fieldset key={at} aria-label={`Equipment ${at + 1}`}>
-          <div className="fields">
-            <TextField path={`${EQUIPMENT}[${at}].name`} label="name" />
-            <QuantityField path={`${EQUIPMENT}[${at}].count`} label="number" otherwise="1" />
-            <QuantityField path={`${EQUIPMENT}[${at}].ratedKw`} label="rated" unit="kW" />
-            <QuantityField path={`${EQUIPMENT}[${at}].efficiencyPct`} label="efficiency" unit="%" />
-            <QuantityField path={`${EQUIPMENT}[${at}].powerFactor`} label="power factor" />
-            <QuantityField path={`${EQUIPMENT}[${at}].loadFactor`} label="load factor" otherwise="1, full load" />
-            <QuantityField path={`${EQUIPMENT}[${at}].coincidence`} label="coincidence" otherwise="1, all together" />
-            <p className="row">
-              <button type="button" className="way" onClick={() => put(list.toSpliced(at, 1))}>
-                Remove
-              </button>
-            </p>
-          </div>
-        </fieldset>
+        <ListEntry key={at} name={`Equipment ${at + 1}`} remove={() => put(list.toSpliced(at, 1))}>
+          <TextField path={`${EQUIPMENT}[${at}].name`} label="name" />
+          <QuantityField path={`${EQUIPMENT}[${at}].count`} label="number" otherwise="1" />
+          <QuantityField path={`${EQUIPMENT}[${at}].ratedKw`} label="rated" unit="kW" />
+          <QuantityField path={`${EQUIPMENT}[${at}].efficiencyPct`} label="efficiency" unit="%" />
+          <QuantityField path={`${EQUIPMENT}[${at}].powerFactor`} label="power factor" />
+          <QuantityField path={`${EQUIPMENT}[${at}].loadFactor`} label="load factor" otherwise="1, full load" />
+          <QuantityField path={`${EQUIPMENT}[${at}].coincidence`} label="coincidence" otherwise="1, all together" />
+        </ListEntry>
       ))}
     </section>
   );

@@ -2,6 +2,7 @@ import type { SpectrumName } from '#libs/engine/index.js';
 import { useDesk } from '../desk/use-desk.js';
 import { ChoiceField } from '../field/choice-field.js';
 import { valueAt } from '../field/document-path.js';
+import { ListEntry } from '../field/list-entry.js';
 import { QuantityField } from '../field/quantity-field.js';
 import { TextField } from '../field/text-field.js';
 
@@ -82,22 +83,15 @@ function Distorting() {
             : 'Drives, rectifiers, welders, lighting: fundamental current and the kind of spectrum.'}
       </p>
       {list?.map((load, at) => (
-        <fieldset key={at} aria-label={`Distorting load ${at + 1}`}>
-          <div className="fields">
-            <TextField path={`${path}[${at}].name`} label="name" />
-            <QuantityField path={`${path}[${at}].fundamentalA`} label="fundamental" unit="A" />
-            {(load as { orders?: unknown[] }).orders === undefined ? (
-              <ChoiceField path={`${path}[${at}].spectrum`} label="spectrum" choices={SPECTRA} />
-            ) : (
-              <p className="caption">orders as measured: {(load as { orders: unknown[] }).orders.length}</p>
-            )}
-            <p className="row">
-              <button type="button" className="way" onClick={() => put(list.toSpliced(at, 1))}>
-                Remove
-              </button>
-            </p>
-          </div>
-        </fieldset>
+        <ListEntry key={at} name={`Distorting load ${at + 1}`} remove={() => put(list.toSpliced(at, 1))}>
+          <TextField path={`${path}[${at}].name`} label="name" />
+          <QuantityField path={`${path}[${at}].fundamentalA`} label="fundamental" unit="A" />
+          {(load as { orders?: unknown[] }).orders === undefined ? (
+            <ChoiceField path={`${path}[${at}].spectrum`} label="spectrum" choices={SPECTRA} />
+          ) : (
+            <p className="caption">orders as measured: {(load as { orders: unknown[] }).orders.length}</p>
+          )}
+        </ListEntry>
       ))}
     </section>
   );
@@ -136,17 +130,10 @@ function Background() {
             : 'Voltage behind the source, % of nominal.'}
       </p>
       {list?.map((_, at) => (
-        <fieldset key={at} aria-label={`Background order ${at + 1}`}>
-          <div className="fields">
-            <QuantityField path={`${path}[${at}].orderH`} label="order" />
-            <QuantityField path={`${path}[${at}].pct`} label="voltage" unit="%" />
-            <p className="row">
-              <button type="button" className="way" onClick={() => put(list.toSpliced(at, 1))}>
-                Remove
-              </button>
-            </p>
-          </div>
-        </fieldset>
+        <ListEntry key={at} name={`Background order ${at + 1}`} remove={() => put(list.toSpliced(at, 1))}>
+          <QuantityField path={`${path}[${at}].orderH`} label="order" />
+          <QuantityField path={`${path}[${at}].pct`} label="voltage" unit="%" />
+        </ListEntry>
       ))}
     </section>
   );

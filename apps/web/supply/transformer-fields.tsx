@@ -1,6 +1,7 @@
 import { useDesk } from '../desk/use-desk.js';
 import { ChoiceField } from '../field/choice-field.js';
 import { valueAt } from '../field/document-path.js';
+import { ListEntry } from '../field/list-entry.js';
 import { QuantityField } from '../field/quantity-field.js';
 
 /** Nameplates of the transformers, and where the meter stands. */
@@ -20,41 +21,34 @@ export function TransformerFields({ count }: { count: number }) {
         </span>
       </div>
       {list.map((_, at) => (
-        <fieldset key={at} aria-label={`Transformer ${at + 1}`}>
-          <div className="fields">
-            <QuantityField path={`supply.transformers[${at}].ratedKva`} label="rated" unit="kVA" />
-            <QuantityField path={`supply.transformers[${at}].impedancePct`} label="impedance" unit="%" />
-            <QuantityField
-              path={`supply.transformers[${at}].impedanceTolerancePct`}
-              label="its tolerance"
-              unit="%"
-              otherwise="10, assumed"
-            />
-            <QuantityField
-              path={`supply.transformers[${at}].loadLossKw`}
-              label="load loss"
-              unit="kW"
-              otherwise="0, assumed"
-            />
-            <QuantityField
-              path={`supply.transformers[${at}].noLoadLossKw`}
-              label="no-load loss"
-              unit="kW"
-              otherwise="0, assumed"
-            />
-            <QuantityField
-              path={`supply.transformers[${at}].noLoadCurrentPct`}
-              label="no-load current"
-              unit="%"
-              otherwise="0, assumed"
-            />
-            <p className="row">
-              <button type="button" className="way" onClick={() => put(list.toSpliced(at, 1))}>
-                Remove
-              </button>
-            </p>
-          </div>
-        </fieldset>
+        <ListEntry key={at} name={`Transformer ${at + 1}`} remove={() => put(list.toSpliced(at, 1))}>
+          <QuantityField path={`supply.transformers[${at}].ratedKva`} label="rated" unit="kVA" />
+          <QuantityField path={`supply.transformers[${at}].impedancePct`} label="impedance" unit="%" />
+          <QuantityField
+            path={`supply.transformers[${at}].impedanceTolerancePct`}
+            label="its tolerance"
+            unit="%"
+            otherwise="10, assumed"
+          />
+          <QuantityField
+            path={`supply.transformers[${at}].loadLossKw`}
+            label="load loss"
+            unit="kW"
+            otherwise="0, assumed"
+          />
+          <QuantityField
+            path={`supply.transformers[${at}].noLoadLossKw`}
+            label="no-load loss"
+            unit="kW"
+            otherwise="0, assumed"
+          />
+          <QuantityField
+            path={`supply.transformers[${at}].noLoadCurrentPct`}
+            label="no-load current"
+            unit="%"
+            otherwise="0, assumed"
+          />
+        </ListEntry>
       ))}
       <div className="fields">
         <ChoiceField
