@@ -5,10 +5,10 @@ import type { MeterFormat } from './meter-format.js';
 import { isMscons, readMscons } from './mscons/read-mscons.js';
 import { isNem12 } from './nem12/nem12-records.js';
 import { readNem12 } from './nem12/read-nem12.js';
+import { isParquet, readParquet } from './parquet/read-parquet.js';
+import { isProfileReadout, readProfileReadout } from './profile-readout/read-profile-readout.js';
 import { isQuadrantRows } from './quadrant-rows/quadrant-line.js';
 import { readQuadrantRows } from './quadrant-rows/read-quadrant-rows.js';
-import { isProfileReadout, readProfileReadout } from './profile-readout/read-profile-readout.js';
-import { isParquet, readParquet } from './parquet/read-parquet.js';
 import { isXlsx, readXlsx } from './xlsx/read-xlsx.js';
 import { xmlStart } from './xml/xml-start.js';
 

@@ -1,4 +1,3 @@
-import { InputProblem } from '#libs/engine/index.js';
 import type { MeterChannel } from './meter-channel.js';
 
 /** Which of two values for one moment counts. */
@@ -67,30 +66,6 @@ function settleRepeat(points: ChannelPoints, at: number, { value, row }: { value
   points.conflicts++;
   if (points.conflictRow === 0 || row < points.conflictRow) points.conflictRow = row;
   return true;
-}
-
-/**
- * The commonest step between neighbouring points, the shorter of two equally common ones.
- * @param points in time order
- * @param name of the channel, for the message
- * @throws InputProblem where there are fewer than two points
- */
-export function commonestStepS({ beginS, rowNumber }: ChannelPoints, name: string): number {
-  const counts = new Map<number, number>();
-  for (let i = 1; i < beginS.length; i++) {
-    const stepS = beginS[i]! - beginS[i - 1]!;
-    counts.set(stepS, (counts.get(stepS) ?? 0) + 1);
-  }
-  let best = Number.NaN;
-  let most = 0;
-  for (const [stepS, count] of counts) {
-    if (count < most || (count === most && stepS > best)) continue;
-    best = stepS;
-    most = count;
-  }
-  if (!Number.isNaN(best)) return best;
-  const expected = `at least two intervals of ${name}, so that their length shows`;
-  throw new InputProblem([{ code: 'wrong-length', row: rowNumber[0] ?? 1, expected, found: `${beginS.length}` }]);
 }
 
 /** What register readings come to. */

@@ -5,10 +5,11 @@ import type { MeterReading, ReadOptions } from '../meter-format.js';
 import { note } from '../note.js';
 import { buildColumns, type Quantity, type QuantitySource } from '../record/build-columns.js';
 import { closeReading, type ReadResult } from '../record/close-reading.js';
+import { commonestStepS } from '../record/commonest-step.js';
 import { gridRows } from '../record/interval-grid.js';
 import { mixedIntervals } from '../record/mixed-intervals.js';
 import { shownReading } from '../record/reading-shown.js';
-import { type ChannelPoints, commonestStepS, type Keep, orderedPoints, registerSteps } from './channel-points.js';
+import { type ChannelPoints, type Keep, orderedPoints, registerSteps } from './channel-points.js';
 import type { MeterChannel } from './meter-channel.js';
 
 const DAY_S = 86_400;
@@ -99,11 +100,18 @@ function oneInterval(ordered: readonly Series[]): number {
   let first = Number.NaN;
   for (const { channel, points } of ordered) {
     const stated = channel.intervalS;
-    const intervalS = Number.isNaN(stated) ? commonestStepS(points, channel.kind.name) : stated;
+    const intervalS = Number.isNaN(stated) ? shownStepS(points, channel.kind.name) : stated;
     if (Number.isNaN(first)) first = intervalS;
     if (intervalS !== first) throw new InputProblem([mixedIntervals(points.rowNumber[0]!, first, intervalS)]);
   }
   return first;
+}
+
+function shownStepS({ beginS, rowNumber }: ChannelPoints, name: string): number {
+  const stepS = commonestStepS(beginS);
+  if (!Number.isNaN(stepS)) return stepS;
+  const expected = `at least two intervals of ${name}, so that their length shows`;
+  throw new InputProblem([{ code: 'wrong-length', row: rowNumber[0] ?? 1, expected, found: `${beginS.length}` }]);
 }
 
 function asIntervals(ordered: readonly Series[], intervalS: number) {

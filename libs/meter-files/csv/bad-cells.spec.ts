@@ -1,7 +1,7 @@
 // Cells and rows that no meter writes are refused by name and place within a second, and the next file is read.
 import { afterEach, describe, expect, it } from 'vitest';
-import { lines, readMeterText, refusalOf } from '../../../test/support/meter-text.js';
 import { InputProblem } from '#libs/engine/index.js';
+import { lines, readMeterText, refusalOf } from '../../../test/support/meter-text.js';
 import { readMeterFile } from '../read-meter-file.js';
 
 const rows = (second: string) =>

@@ -10,8 +10,8 @@ import { headerWindows } from './header-windows.js';
 import { readNumberText } from './number-cell.js';
 import { RowCells } from './row-cells.js';
 import { type SideColumns, sideColumns } from './side-columns.js';
-import { statedRatios } from './transformer-ratio.js';
 import { chooseTimeColumns, isDated, isSerial, type TimeColumns } from './time-columns.js';
+import { statedRatios } from './transformer-ratio.js';
 import { readUnit } from './unit-text.js';
 
 /** How the rows of a delimited file are to be read. */

@@ -1,7 +1,7 @@
 import type { MeterMap, PowerFactorSign, QualityMeaning } from '#libs/contract/meter-map.js';
 import type { ReadOptions } from '../meter-format.js';
-import type { StampedRows } from '../time/stamped-rows.js';
 import type { DateOrder } from '../time/stamp-text.js';
+import type { StampedRows } from '../time/stamped-rows.js';
 import type { ColumnChoice } from './column-choice.js';
 import type { CsvLayout } from './csv-layout.js';
 import type { DecimalMark, DecimalSign } from './decimal-mark.js';

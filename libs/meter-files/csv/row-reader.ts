@@ -3,14 +3,14 @@ import { shown } from '#libs/contract/shown.js';
 import { RowProblems } from '../row-problems.js';
 import { StampedRows } from '../time/stamped-rows.js';
 import { CellNumbers } from './cell-numbers.js';
-import type { ReadRows } from './csv-meaning.js';
 import type { CsvLayout } from './csv-layout.js';
+import type { ReadRows } from './csv-meaning.js';
 import { DecimalMark } from './decimal-mark.js';
 import { type NumberCell, readNumberText } from './number-cell.js';
 import type { QuickPlan } from './quick-rows.js';
 import type { RowCells } from './row-cells.js';
-import { isHeaderRow, isTotalRow, type SkippedRows, shapeProblem, skip } from './row-shape.js';
 import { RowQualities } from './row-qualities.js';
+import { isHeaderRow, isTotalRow, type SkippedRows, shapeProblem, skip } from './row-shape.js';
 import { RowStamps } from './row-stamps.js';
 
 const YES = /^(?:1|1\.0|true|yes|on|y|ja|an|oui|si|sí|ein)$/i;

@@ -1,6 +1,6 @@
 import { InputProblem } from '#libs/engine/index.js';
-import { mixedIntervals } from '../record/mixed-intervals.js';
 import { TimedReadings } from '../reading-type/timed-readings.js';
+import { mixedIntervals } from '../record/mixed-intervals.js';
 import type { RowProblems } from '../row-problems.js';
 import type { XmlElement } from '../xml/walk-xml.js';
 import { readDecimal, readWhole } from '../xml/xml-numbers.js';

@@ -8,7 +8,7 @@ import { quotedCell, SheetText } from '../sheet/sheet-text.js';
 import { SpooledFile } from '../spooled-file.js';
 import { type ColumnChunk, ColumnPages } from './column-pages.js';
 import { PageError } from './page-error.js';
-import { type Footer, type NamedColumn, readFooter, rangeOf } from './parquet-footer.js';
+import { type Footer, type NamedColumn, rangeOf, readFooter } from './parquet-footer.js';
 import { type ValueText, valueText } from './value-text.js';
 
 const STARTS = ['PAR1', 'PARE'];

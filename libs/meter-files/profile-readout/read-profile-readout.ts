@@ -1,6 +1,5 @@
 import { Question } from '#libs/contract/question.js';
-import { zoneTable } from '#libs/contract/time-zone.js';
-import { InputProblem, type Remark, type ZoneTable } from '#libs/engine/index.js';
+import { InputProblem, type Remark } from '#libs/engine/index.js';
 import { MeterChannel } from '../channels/meter-channel.js';
 import { type ChannelFile, readChannels } from '../channels/read-channels.js';
 import { readMeters } from '../channels/read-meters.js';
@@ -11,11 +10,9 @@ import { note } from '../note.js';
 import { chosenChannels, type ObisChannel, type ObisQuantity } from '../obis/obis-quantity.js';
 import { shownReading } from '../record/reading-shown.js';
 import { RowProblems } from '../row-problems.js';
-import type { ProfileColumn } from './profile-header.js';
+import { type SeasonClock, seasonClock, seasonMoment } from '../time/season-moment.js';
+import type { ProfileColumn, ProfileHeader } from './profile-header.js';
 import { ProfileStretches, type Readout, type Stretch } from './profile-stretches.js';
-import { momentOf } from './season-times.js';
-
-const DAY_S = 86_400;
 
 /**
  * Whether a file holds a load profile as meters send it.
@@ -84,11 +81,12 @@ function readUnder(readouts: readonly Readout[], options: ReadOptions, multiplie
 
 function fileOf(stretches: readonly Stretch[], options: ReadOptions, multiplier: number): ChannelFile {
   const said = options.timeZone ?? options.map?.timeZone ?? options.siteTimeZone;
-  const table = tableOver(stretches, said ?? 'UTC');
+  const clocks = stretches.map(({ header }) => header.clockS);
+  const clock = seasonClock(said ?? null, clocks);
   const ends = options.map?.stamp !== 'begin';
   const channels = new Map<string, ObisChannel>();
   const counts = { rowsRead: 0, flagged: 0, partial: 0 };
-  for (const stretch of stretches) addStretch(stretch, { table, ends, multiplier, channels, counts });
+  for (const stretch of stretches) addStretch(stretch, { clock, ends, multiplier, channels, counts });
   const chosen = chosenChannels([...channels.values()]);
   const needsZone = stretches.some(({ header }) => header.season !== 'utc');
   const notes: Remark[] = [
@@ -102,19 +100,8 @@ function fileOf(stretches: readonly Stretch[], options: ReadOptions, multiplier:
   return { format: 'profile-readout', channels: chosen.channels, notes, rowsRead: counts.rowsRead };
 }
 
-function tableOver(stretches: readonly Stretch[], zone: string): ZoneTable {
-  let low = Number.POSITIVE_INFINITY;
-  let high = Number.NEGATIVE_INFINITY;
-  for (const { header, values } of stretches) {
-    const lengthS = (values.length / header.columns.length) * header.intervalS;
-    low = Math.min(low, header.clockS);
-    high = Math.max(high, header.clockS + lengthS);
-  }
-  return zoneTable(zone, low - 2 * DAY_S, high + 2 * DAY_S);
-}
-
 interface Placing {
-  table: ZoneTable;
+  clock: SeasonClock;
   ends: boolean;
   multiplier: number;
   channels: Map<string, ObisChannel>;
@@ -127,7 +114,7 @@ function addStretch(stretch: Stretch, placing: Placing): void {
   const { counts } = placing;
   counts.rowsRead += rows.length;
   if (header.flagged) counts.flagged += rows.length;
-  const endS = firstEndS(stretch, placing.table);
+  const endS = firstEndS(stretch, placing.clock);
   if (endS % intervalS !== 0) {
     // an interval that an event cut short: alone it is left out, a row of them has no place on a grid
     if (rows.length > 1) refuseOffGrid(row, intervalS);
@@ -145,11 +132,20 @@ function addStretch(stretch: Stretch, placing: Placing): void {
   }
 }
 
-function firstEndS({ header, row }: Stretch, table: ZoneTable): number {
-  const endS = momentOf(header.clockS, header.season, table);
+function firstEndS({ header, row }: Stretch, clock: SeasonClock): number {
+  const endS = momentOf(header, clock);
   if (endS !== null) return endS;
-  const expected = `a time that the clocks of ${table.zone} show`;
-  throw new InputProblem([{ code: 'bad-time', row, column: 1, expected, found: 'one in the hour that spring skips' }]);
+  const expected = `a time and season that the clocks of ${clock.table.zone} show`;
+  const found = header.season === null ? 'a time they skip' : `${header.season} time`;
+  throw new InputProblem([{ code: 'bad-time', row, column: 1, expected, found }]);
+}
+
+/** Without a season the first pass of a doubled hour is taken. */
+function momentOf({ clockS, season }: ProfileHeader, clock: SeasonClock): number | null {
+  if (season === 'utc') return clockS;
+  if (season !== null) return seasonMoment(clockS, season === 'summer', clock);
+  const first = clock.said ? seasonMoment(clockS, true, clock) : null;
+  return first ?? seasonMoment(clockS, false, clock);
 }
 
 function refuseOffGrid(row: number, intervalS: number): never {

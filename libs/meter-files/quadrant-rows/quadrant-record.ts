@@ -9,11 +9,12 @@ import { note } from '../note.js';
 import { buildColumns, type Quantity, type QuantitySource } from '../record/build-columns.js';
 import type { ReadResult } from '../record/close-reading.js';
 import { gridRows, type IntervalGrid } from '../record/interval-grid.js';
+import { RowProblems } from '../row-problems.js';
 import { clockTimes, orderRows } from '../time/clock-times.js';
 import { type Moments, showsEnds } from '../time/moments.js';
+import { type SeasonClock, seasonClock, seasonMoment } from '../time/season-moment.js';
 import type { DateOrder } from '../time/stamp-text.js';
 import { ENERGIES, FLAG, type QuadrantReader } from './quadrant-reader.js';
-import { seasonTimes } from './season-times.js';
 
 /** One way of reading what the rows leave open. */
 export interface QuadrantMeaning {
@@ -24,6 +25,7 @@ export interface QuadrantMeaning {
 
 /** Columns AI, AE, R1 … R4 of the file, counted from 1. */
 const FIRST_COLUMN = 3;
+const FLAG_COLUMN = 2;
 const DAY_S = 86_400;
 
 /**
@@ -99,13 +101,31 @@ function placedRows(
     ...(newestFirst ? [note('rows-newest-first', { rows: count })] : []),
     ...(movedMidnights > 0 ? [note('midnight-under-ending-day', { rows: movedMidnights })] : []),
   ];
-  const { utcS, table } = seasonTimes({ clock, summer: values[FLAG]!, rowNumber }, zone);
-  const moments: Moments = { utcS, clockAt: (row) => clock[row]!, newestFirst, zone: table, notes };
+  const season = seasonClock(zone, clock);
+  const utcS = seasonMoments({ clock, summer: values[FLAG]!, rowNumber }, season);
+  const moments: Moments = { utcS, clockAt: (row) => clock[row]!, newestFirst, zone: season.table, notes };
   const energies = values.slice(0, FLAG);
   const grid = gridRows({ utcS, rowNumber, values: energies, spanS: Number.NaN }, keep);
   const bounds = { first: grid.kept[0]!, last: grid.kept.at(-1)!, intervalS: grid.intervalS };
   const because = map.stamp === undefined ? showsEnds(rows, moments, bounds) : null;
   return { moments, grid, ends: map.stamp === 'end' || because !== null, because };
+}
+
+/** The flag, 1 for summer time, tells the passes of a doubled hour apart; one that contradicts the zone is refused. */
+function seasonMoments(
+  { clock, summer, rowNumber }: { clock: Float64Array; summer: Float64Array; rowNumber: Int32Array },
+  season: SeasonClock,
+): Float64Array {
+  const problems = new RowProblems();
+  const utcS = clock.map((clockS, i) => {
+    const momentS = seasonMoment(clockS, summer[i] === 1, season);
+    if (momentS !== null) return momentS;
+    const expected = `the flag of the season that the clocks of ${season.table.zone} showed`;
+    problems.add({ code: 'bad-time', row: rowNumber[i]!, column: FLAG_COLUMN, expected, found: String(summer[i]) });
+    return Number.NaN;
+  });
+  problems.refuse();
+  return utcS;
 }
 
 function sourcesOf(values: readonly Float64Array[], { units = {}, multiplier = 1 }: MeterMap): QuantitySource[] {

@@ -11,8 +11,8 @@ import { closeReading, type ReadResult } from '../record/close-reading.js';
 import { ConflictingRows } from '../record/interval-grid.js';
 import { sameColumns, shownReading } from '../record/reading-shown.js';
 import { dateOrders } from '../time/date-orders.js';
-import { type QuadrantMeaning, quadrantRecord } from './quadrant-record.js';
 import { QuadrantReader } from './quadrant-reader.js';
+import { type QuadrantMeaning, quadrantRecord } from './quadrant-record.js';
 
 const SEMICOLON = 0x3b;
 

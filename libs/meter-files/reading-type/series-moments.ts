@@ -1,5 +1,6 @@
 import { InputProblem } from '#libs/engine/index.js';
 import { MeterChannel } from '../channels/meter-channel.js';
+import { commonestStepS } from '../record/commonest-step.js';
 import { mixedIntervals } from '../record/mixed-intervals.js';
 import type { ChosenSeries } from './choose-series.js';
 import { describeType } from './reading-type.js';
@@ -20,25 +21,7 @@ export interface StampMarks {
  */
 export function intervalOf({ count, spanS, stampS }: TimedReadings, statedS: number): number {
   for (let i = 0; i < count; i++) if (spanS[i]! > 0) return spanS[i]!;
-  return Number.isNaN(statedS) ? commonestStepS(stampS.subarray(0, count)) : statedS;
-}
-
-/** The shorter of two equally common ones. */
-function commonestStepS(stampS: Float64Array): number {
-  const sorted = stampS.slice().sort();
-  const counts = new Map<number, number>();
-  for (let i = 1; i < sorted.length; i++) {
-    const stepS = sorted[i]! - sorted[i - 1]!;
-    if (stepS > 0) counts.set(stepS, (counts.get(stepS) ?? 0) + 1);
-  }
-  let best = Number.NaN;
-  let most = 0;
-  for (const [stepS, count] of counts) {
-    if (count < most || (count === most && stepS > best)) continue;
-    best = stepS;
-    most = count;
-  }
-  return best;
+  return Number.isNaN(statedS) ? commonestStepS(stampS.slice(0, count).sort()) : statedS;
 }
 
 /**
@@ -93,7 +76,7 @@ function refuseOtherLengths({ count, spanS, stampS, rowNumber }: TimedReadings, 
     if (spanS[i] !== intervalS) throw new InputProblem([mixedIntervals(rowNumber[i]!, intervalS, spanS[i]!)]);
   }
   // a mean over a quarter of an hour, read once an hour, is no record of the hour
-  const stepS = stated ? intervalS : commonestStepS(stampS.subarray(0, count));
+  const stepS = stated ? intervalS : commonestStepS(stampS.slice(0, count).sort());
   if (stepS !== intervalS && !Number.isNaN(stepS)) {
     throw new InputProblem([mixedIntervals(rowNumber[0]!, intervalS, stepS)]);
   }

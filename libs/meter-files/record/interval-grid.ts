@@ -1,4 +1,5 @@
 import { InputProblem } from '#libs/engine/index.js';
+import { commonestStepS } from './commonest-step.js';
 import { mixedIntervals } from './mixed-intervals.js';
 
 /** Rows with a moment each, in any order. */
@@ -62,7 +63,7 @@ export function gridRows(rows: MomentRows, keep: 'first' | 'last' | undefined): 
   }
   const { order, misplaced } = timeOrder(rows.utcS);
   const { kept, duplicates, overruled } = oneAMoment(rows, order, keep);
-  const intervalS = Number.isNaN(rows.spanS) ? commonestStep(rows.utcS, kept) : rows.spanS;
+  const intervalS = Number.isNaN(rows.spanS) ? shownStepS(rows.utcS, kept) : rows.spanS;
   refuseOffGrid(rows, kept, intervalS);
   if (Number.isNaN(rows.spanS)) refuseSecondInterval(rows, kept, intervalS);
   return { intervalS, kept, duplicates, overruled, misplaced };
@@ -129,38 +130,11 @@ function sameValues(values: readonly Float64Array[], a: number, b: number): bool
   return true;
 }
 
-/** The commonest step between neighbours, the shorter of two equally common ones. */
-function commonestStep(utcS: Float64Array, kept: Int32Array): number {
-  if (kept.length < 2) {
-    const expected = 'at least two intervals, so that their length shows';
-    throw new InputProblem([{ code: 'wrong-length', expected, found: `${kept.length}` }]);
-  }
-  let best = Number.NaN;
-  let most = 0;
-  for (const [stepS, count] of stepCounts(utcS, kept)) {
-    if (count > most || (count === most && stepS < best)) {
-      best = stepS;
-      most = count;
-    }
-  }
-  return best;
-}
-
-function stepCounts(utcS: Float64Array, kept: Int32Array): Map<number, number> {
-  const counts = new Map<number, number>();
-  let runS = utcS[kept[1]!]! - utcS[kept[0]!]!;
-  let run = 1;
-  for (let i = 2; i < kept.length; i++) {
-    const stepS = utcS[kept[i]!]! - utcS[kept[i - 1]!]!;
-    if (stepS === runS) {
-      run++;
-      continue;
-    }
-    counts.set(runS, (counts.get(runS) ?? 0) + run);
-    runS = stepS;
-    run = 1;
-  }
-  return counts.set(runS, (counts.get(runS) ?? 0) + run);
+function shownStepS(utcS: Float64Array, kept: Int32Array): number {
+  const stepS = commonestStepS(utcS, kept);
+  if (!Number.isNaN(stepS)) return stepS;
+  const expected = 'at least two intervals, so that their length shows';
+  throw new InputProblem([{ code: 'wrong-length', expected, found: `${kept.length}` }]);
 }
 
 function refuseOffGrid(rows: MomentRows, kept: Int32Array, intervalS: number): void {

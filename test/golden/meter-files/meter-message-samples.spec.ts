@@ -126,6 +126,13 @@ describe('a load profile of a read-out', () => {
     expect(found.kw).toEqual([10, 11, 12, 13]);
   });
 
+  it('whose season contradicts the zone is refused: no clock in Berlin shows summer time in January', async () => {
+    const january = (season: 0 | 1) => `P.01(${season}240115001500)(00)(15)(2)(1.5)(kW)(3.5)(kvar)\n(1)(1)\n(2)(1)\n`;
+    const options = { timeZone: 'Europe/Berlin' };
+    expect((await refusalOf(january(1), options)).problems[0]).toMatchObject({ code: 'bad-time', row: 1 });
+    expect((await readMeterText(january(0), options)).record.firstS).toBe(Date.UTC(2024, 0, 14, 23) / 1000);
+  });
+
   it('with a transformer ratio raises a question, because the values may or may not hold it', async () => {
     const { questions } = await questionOf(sample('profile-readout-ratio.txt'));
     expect(questions[0]!.readings.map(({ map, maxKw }) => [map.multiplier, maxKw])).toEqual([
