@@ -1,6 +1,6 @@
 import * as z from 'zod';
 import { METER_COLUMNS, METER_UNITS, type MeterMap, POWER_FACTOR_SIGNS, UNIT_COLUMNS } from './meter-map.js';
-import { label, plain, POSITIVE, quantity, whole } from './schema-parts.js';
+import { label, POSITIVE, plain, quantity, whole } from './schema-parts.js';
 import { readBySchema } from './schema-problems.js';
 import { isTimeZone } from './time-zone.js';
 

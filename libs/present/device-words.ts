@@ -1,4 +1,4 @@
-import type { DeviceName, DeviceRow, DeviceState, BankOutcome } from '#libs/engine/index.js';
+import type { BankOutcome, DeviceName, DeviceRow, DeviceState } from '#libs/engine/index.js';
 import { formatNumber, formatQuantity, GAP } from './format-number.js';
 
 /** How a device stands, as a person reads it. */

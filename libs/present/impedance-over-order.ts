@@ -1,11 +1,11 @@
 import {
   admittanceSquareInto,
   type Bank,
+  type BankOutcome,
   bankLevels,
   type CornerCase,
   networkModel,
   networkTable,
-  type BankOutcome,
   PeakFinder,
   stageAdmittance,
   stageBranch,

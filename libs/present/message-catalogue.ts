@@ -4,8 +4,8 @@ import { ESTIMATE_MESSAGES } from './estimate-messages.js';
 import type { Messages } from './message.js';
 import { MONEY_MESSAGES } from './money-messages.js';
 import { NOTE_MESSAGES } from './note-messages.js';
-import { RECORD_MESSAGES } from './record-messages.js';
 import { REASON_MESSAGES } from './reason-messages.js';
+import { RECORD_MESSAGES } from './record-messages.js';
 
 /** One sentence for every code of a remark. */
 export const MESSAGES: Messages = {

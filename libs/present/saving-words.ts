@@ -1,4 +1,4 @@
-import type { MoneyQuantity, PickChange, Recommended, SavingCase, SavingRange } from '#libs/engine/index.js';
+import type { Money, MoneyQuantity, PickChange, Recommended, SavingCase, SavingRange } from '#libs/engine/index.js';
 import { formatNumber, formatQuantity } from './format-number.js';
 import { NO_GUARANTEE } from './money-words.js';
 
@@ -26,6 +26,15 @@ export const WAY_WORDS: Record<Recommended, string> = {
   "keep today's bank": 'keeping today’s bank',
   'new bank': 'a new bank',
 };
+
+/**
+ * The saving that is told first: with a range the lower of the ideal controller's and the late one's.
+ * @param money of a result
+ * @returns a year, in the site's currency
+ */
+export function headlineSaving({ savingRange, savingPerYear }: Money): number {
+  return savingRange?.headlinePerYear ?? savingPerYear;
+}
 
 /**
  * A saving with its range.

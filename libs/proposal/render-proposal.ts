@@ -17,6 +17,7 @@ import { drawMeasured } from './section-measured.js';
 import { drawMethod } from './section-method.js';
 import { drawMoney } from './section-money.js';
 import { drawNetwork } from './section-network.js';
+import { drawSensitivity } from './section-sensitivity.js';
 import { drawSignatures } from './section-signatures.js';
 import { drawSiteActions } from './section-site-actions.js';
 import { drawStages } from './section-stages.js';
@@ -26,7 +27,6 @@ export type { ProposalFrame } from './proposal-frame.js';
 /**
  * The proposal as a tagged PDF: equal outcome and frame give equal bytes.
  * A plan without a record prints as an estimate and leaves out what needs one.
- * Section 10 (sensitivity) is left out in this edition; the numbers of the others stay.
  * @param outcome the plan or judgement, its result already put in words
  * @param frame number, revision, state, hash and sheet
  * @returns the file's bytes
@@ -55,6 +55,7 @@ export async function renderProposal(outcome: Outcome | EstimateOutcome, frame: 
   else drawLoad(paper, outcome);
   drawNetwork(paper, outcome);
   drawMeasured(paper, outcome);
+  drawSensitivity(paper, outcome);
   drawMoney(paper, outcome);
   drawValidity(paper, outcome);
   drawAgeing(paper, outcome);

@@ -91,8 +91,8 @@ function verdictSentence({ result, site }: BankOutcome): string {
 function notCovered({ result, site }: Outcome | EstimateOutcome): string {
   const parts = [
     ...(result.record === null ? ['the load within a month', 'switchings'] : []),
-    'costs and savings',
-    'ageing and changes of the load',
+    ...(result.money === null ? ['costs and savings'] : []),
+    'a load of another kind',
     'rating of breakers and cables beyond section 7',
   ];
   if (site.loads.distorting === null || site.loads.backgroundPct === null)

@@ -10,7 +10,7 @@ const STYLE: Style = { ...BODY, size: 9 };
 const COLUMNS: Column[] = [
   { head: 'level', share: 0, fixed: 63 },
   { head: 'what, and its source', share: 58 },
-  { head: 'value', share: 0, fixed: 43, align: 'right' },
+  { head: 'value', share: 0, fixed: 58, align: 'right' },
   { head: 'limit', share: 0, fixed: 43, align: 'right' },
   { head: 'consequence', share: 42 },
   { head: 'accepted', share: 0, fixed: 37 },
@@ -19,7 +19,7 @@ const COLUMNS: Column[] = [
 /** What a reviewer has to know, gravest first; each finding to be accepted has a line to sign on. */
 export function drawFindings(paper: Paper, outcome: Outcome | EstimateOutcome): void {
   const list = findings(outcome);
-  paper.heading('2', `Findings: ${findingCount(list)}`);
+  paper.heading('2', `Findings: ${findingCount(list)}`, { keep: 120 });
   if (list.length === 0) {
     paper.paragraph(['No rule asked for a remark.']);
     return;

@@ -1,4 +1,4 @@
-import type { Figure, BankOutcome } from '#libs/engine/index.js';
+import type { BankOutcome, Figure } from '#libs/engine/index.js';
 import { formatNumber } from '#libs/present/format-number.js';
 import { INK, SOFT, STROKE } from './ink.js';
 import { NOTE, type Paper } from './paper.js';

@@ -23,8 +23,8 @@ export function drawValidity(paper: Paper, outcome: Outcome | EstimateOutcome): 
   ];
   drawTable(paper, columns, validityRows(outcome), { after: 6 });
   paper.paragraph([
-    'The range of each input within which the verdict stays the same is not computed in this edition (section 10), nor are ' +
-      'costs and savings (section 11). Growth or loss of load, a stage or a transformer out of service: plan again.',
+    'How far the verdict stands when an input moves is in section 10. Beyond that, and with a transformer out of service or ' +
+      'a load of another kind: plan again.',
   ]);
   if (outcome.site.rules === 'iec' && outcome.bank.groups.length > 0) {
     const times = OVERVOLTAGE_DURATIONS.map(

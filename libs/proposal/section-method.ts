@@ -39,7 +39,10 @@ export function drawMethod(paper: Paper, outcome: Outcome | EstimateOutcome): vo
   const load = isEstimate(outcome) ? ESTIMATE : FROM_RECORD;
   for (const sentence of [...load, ...METHOD]) paper.paragraph([sentence], { after: 3.5 });
   if (!isEstimate(outcome)) drawWorked(paper, outcome);
-  paper.heading('6.2', 'Every figure, with its source and the units of what was put in', { level: 3 });
+  paper.heading('6.2', 'Every figure, with its source and the units of what was put in', {
+    level: 3,
+    keep: 110,
+  });
   const rows = figures.map((figure): Cell[] => [
     [figure.label, NEW_LINE, { text: `${figure.source}. ${unitWords(figure)}`, ink: SOFT, size: 8.4 }],
     formulaCell(figure),

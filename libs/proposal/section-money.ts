@@ -18,6 +18,7 @@ import {
   tariffWords,
 } from '#libs/present/money-words.js';
 import { plainName } from '#libs/present/plain-name.js';
+import { headlineSaving, SAVING_CASE_WORDS } from '#libs/present/saving-words.js';
 import { VERDICT_WORDS } from '#libs/present/verdict-words.js';
 import { drawFigureBeside, halves } from './figure-block.js';
 import { NOTE, type Paper, STRONG } from './paper.js';
@@ -54,7 +55,7 @@ function unpricedWords({ site: { papers }, kind }: Outcome | EstimateOutcome): s
 function drawPriced(paper: Paper, outcome: Outcome): void {
   const { papers } = outcome.site;
   const money = outcome.result.money!;
-  const saving = formatMoney(money.savingPerYear, papers.currency);
+  const saving = formatMoney(headlineSaving(money), papers.currency);
   paper.heading('11', `Money: ${saving} a year saved, ${NO_GUARANTEE}`, { keep: 280 });
   paper.paragraph([
     `${tariffWords(papers)} ${priceBookWords(papers)} ${isPriced(money) ? financeWords(papers) : ''}`.trim(),
@@ -82,7 +83,7 @@ function drawWorth(paper: Paper, money: PricedMoney, papers: MoneyPapers): void 
     ['capital', formatMoney(money.capital.total, currency), 'net present value', formatMoney(money.npv, currency)],
     [
       'saving a year',
-      formatMoney(money.savingPerYear, currency),
+      formatMoney(headlineSaving(money), currency),
       'the same as a yearly amount',
       formatMoney(money.annuityPerYear, currency),
     ],
@@ -95,6 +96,23 @@ function drawWorth(paper: Paper, money: PricedMoney, papers: MoneyPapers): void 
     { head: 'what that is worth', share: 24 },
     { head: '', share: 26, align: 'right' },
   ];
+  drawTable(paper, columns, rows, { padding: 2.2, gutter: 18 });
+  drawSavingCases(paper, money, currency);
+}
+
+/** A saving rests on a controller and a bank that work: what it comes to where they work less well. */
+function drawSavingCases(paper: Paper, { savingRange }: PricedMoney, currency: string): void {
+  if (savingRange === null) return;
+  const columns: Column[] = [
+    { head: 'the saving a year', share: 44 },
+    { head: currency, share: 20, align: 'right' },
+    { head: 'net present value', share: 20, align: 'right' },
+  ];
+  const rows = savingRange.cases.map(({ name, savingPerYear, npv }) => [
+    SAVING_CASE_WORDS[name],
+    formatMoney(savingPerYear, ''),
+    formatMoney(npv, ''),
+  ]);
   drawTable(paper, columns, rows, { padding: 2.2, gutter: 18 });
 }
 

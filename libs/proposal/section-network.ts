@@ -1,4 +1,4 @@
-import type { NetworkLevel, BankOutcome } from '#libs/engine/index.js';
+import type { BankOutcome, NetworkLevel } from '#libs/engine/index.js';
 import { dutyName } from '#libs/present/figure-words.js';
 import { countWord } from '#libs/present/findings.js';
 import { formatApart, formatNumber, formatQuantity, GAP } from '#libs/present/format-number.js';

@@ -1,4 +1,4 @@
-import { dischargeS, type BankOutcome, type StageGroup } from '#libs/engine/index.js';
+import { type BankOutcome, dischargeS, type StageGroup } from '#libs/engine/index.js';
 import { countWord } from '#libs/present/findings.js';
 import { formatNumber, formatQuantity, GAP } from '#libs/present/format-number.js';
 import { formatLength } from '#libs/present/local-stamp.js';

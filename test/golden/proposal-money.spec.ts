@@ -52,6 +52,12 @@ function missing(text: string, rows: readonly Row[]): string[] {
   return rows.map((row) => squeezed(row.join(''))).filter((row) => !text.includes(row));
 }
 
+/** With a range the lower of the ideal controller's saving and the late one's. */
+function toldFirst({ savingRange, savingPerYear }: Money): number {
+  const [ideal, late] = savingRange?.cases ?? [];
+  return ideal === undefined || late === undefined ? savingPerYear : Math.min(ideal.savingPerYear, late.savingPerYear);
+}
+
 /** Every table row that a priced result has to print, as formatted. */
 function expectedRows(money: Money & Worth): Row[] {
   const cents = (value: number) => formatFixed(value, 2);
@@ -76,7 +82,7 @@ function expectedRows(money: Money & Worth): Row[] {
       return [String(year), whole(net), whole(discounted), whole(months.at(-1)!.cumulative)];
     }),
     ['capital', whole(money.capital.total), 'EUR', 'net present value', whole(money.npv), 'EUR'],
-    ['saving a year', whole(money.savingPerYear), 'EUR', 'the same as a yearly amount', whole(money.annuityPerYear)],
+    ['saving a year', whole(toldFirst(money)), 'EUR', 'the same as a yearly amount', whole(money.annuityPerYear)],
   ];
 }
 

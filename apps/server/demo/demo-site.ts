@@ -40,7 +40,7 @@ export const DEMO_SITE = {
     stageKvar: [12.5, 25, 50],
     reactorPct: [0, 7],
     maxStages: 10,
-    switches: [{ kind: 'contactor', maxStageKvar: 75, stepDelayS: 10, reconnectDelayS: 60 }],
+    switches: [{ kind: 'contactor', maxStageKvar: 75, stepDelayS: 10, reconnectDelayS: 240 }],
     cabinets: [
       { name: 'wall', maxKvar: 150, maxStages: 4 },
       { name: 'floor-standing', maxKvar: 400, maxStages: 10 },

@@ -1,5 +1,6 @@
 import type { ReactNode } from 'react';
 import { formatNumber } from '#libs/present/format-number.js';
+import { headlineSaving } from '#libs/present/saving-words.js';
 import { verdictWords } from '#libs/present/verdict-words.js';
 import { STATIONS, type Station, siteAddress, stationOfPath } from '../address.js';
 import { bankOf, type DeskState, staleFrom } from '../desk/desk-state.js';
@@ -125,7 +126,7 @@ const FIGURES: Record<Station, (state: DeskState) => { figure: ReactNode; third:
       };
     const currency = String(state.document?.currency ?? '');
     return {
-      figure: <Quantity value={money.savingPerYear} unit={currency} digits="whole" />,
+      figure: <Quantity value={headlineSaving(money)} unit={currency} digits="whole" />,
       third: 'a year, estimated',
     };
   },

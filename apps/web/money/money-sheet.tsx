@@ -10,6 +10,7 @@ import {
   priceBookWords,
   tariffWords,
 } from '#libs/present/money-words.js';
+import { headlineSaving } from '#libs/present/saving-words.js';
 import { useDesk } from '../desk/use-desk.js';
 import { Plot } from '../draw/plot.js';
 import { ScrollTable } from '../draw/scroll-table.js';
@@ -51,7 +52,7 @@ function NotPriced({ papers }: { papers: MoneyPapers }) {
 
 function Figures({ money, papers }: { money: Money; papers: MoneyPapers }) {
   const { currency } = papers;
-  const saving = formatMoney(money.savingPerYear, currency);
+  const saving = formatMoney(headlineSaving(money), currency);
   return (
     <>
       <Headline figures={isPriced(money) ? keyFigures(money, currency) : []}>

@@ -1,7 +1,7 @@
 import { describe, expect, it } from 'vitest';
 import { closingPeak } from './closing-circuit.js';
-import { closedFormInrush } from './inrush.js';
 import type { ClosingCircuit, SeriesBranch } from './closing-parts.js';
+import { closedFormInrush } from './inrush.js';
 
 const OMEGA = 2 * Math.PI * 50;
 const site = { nominalV: 400, frequencyHz: 50 };

@@ -1,5 +1,5 @@
-import { type ComplexNumber, cAbs, cAdd, cDivide, cMultiply, cScale, cSubtract } from '../quantity/complex-number.js';
 import { invertInto } from '../network/nodal-impedance.js';
+import { type ComplexNumber, cAbs, cAdd, cDivide, cMultiply, cScale, cSubtract } from '../quantity/complex-number.js';
 import { improvedRoots } from './aberth.js';
 import type { ClosingNetwork, NetworkBranch, SeriesBranch } from './closing-parts.js';
 
