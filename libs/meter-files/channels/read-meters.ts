@@ -7,6 +7,12 @@ import { shownReading } from '../record/reading-shown.js';
 /** Reads one meter of a file. */
 export type ReadMeter<Meter> = (meter: Meter, options: ReadOptions) => MeterReading;
 
+/**
+ * What is done where only one of several meters gives a record: the others are named in a note, as in feeds that hold gas
+ * beside electricity, or a person is asked, as where a damaged number would hide a part of the meter's days.
+ */
+export type OtherMeters = 'leave' | 'ask';
+
 /** More are not worked out for a question. */
 const MOST_METERS = 12;
 
@@ -15,6 +21,7 @@ const MOST_METERS = 12;
  * @param meters what the file holds, by the meter's own number
  * @param options what is said about it; the map's `meter` names one of several
  * @param readMeter how one of them is read
+ * @param others what is done with meters that give no record by themselves
  * @returns the record and its quality
  * @throws Question where there are several and none is named
  * @throws InputProblem where there is none, or the one named is not there
@@ -23,6 +30,7 @@ export function readMeters<Meter>(
   meters: ReadonlyMap<string, Meter>,
   options: ReadOptions,
   readMeter: ReadMeter<Meter>,
+  others: OtherMeters = 'ask',
 ): MeterReading {
   const names = [...meters.keys()];
   const said = options.map?.meter;
@@ -38,13 +46,14 @@ export function readMeters<Meter>(
   if (only === undefined)
     throw new InputProblem([{ code: 'empty-file', expected: 'values of a meter', found: 'none' }]);
   if (meters.size === 1) return readMeter(only, options);
-  return askWhichMeter(meters, options, readMeter);
+  return askWhichMeter(meters, options, readMeter, others);
 }
 
 function askWhichMeter<Meter>(
   meters: ReadonlyMap<string, Meter>,
   options: ReadOptions,
   readMeter: ReadMeter<Meter>,
+  others: OtherMeters,
 ): MeterReading {
   const readings: QuestionReading[] = [];
   const whole: { name: string; reading: MeterReading }[] = [];
@@ -61,10 +70,10 @@ function askWhichMeter<Meter>(
   }
   const [first] = whole;
   if (first === undefined) throw failure;
-  if (whole.length > 1 || meters.size > MOST_METERS) {
+  if (others === 'ask' || whole.length > 1 || meters.size > MOST_METERS) {
     throw new Question([{ id: 'meter', about: `which of the ${meters.size} meters of the file is meant`, readings }]);
   }
-  const others = [...meters.keys()].filter((name) => name !== first.name).join(', ');
+  const left = [...meters.keys()].filter((name) => name !== first.name).join(', ');
   const { record, quality } = first.reading;
-  return { record: { ...record, notes: [...record.notes, note('meters-left-out', { meters: others })] }, quality };
+  return { record: { ...record, notes: [...record.notes, note('meters-left-out', { meters: left })] }, quality };
 }

@@ -1,5 +1,6 @@
 import { Question } from '#libs/contract/question.js';
 import { InputProblem, type Remark } from '#libs/engine/index.js';
+import { readMeters } from '../channels/read-meters.js';
 import { RowBuffer } from '../csv/row-buffer.js';
 import { RowCells } from '../csv/row-cells.js';
 import type { MeterBytes } from '../meter-bytes.js';
@@ -40,13 +41,16 @@ export async function readNem12(source: MeterBytes, options: ReadOptions): Promi
 }
 
 function closed(reader: Nem12Reader, options: ReadOptions): MeterReading {
+  return readMeters(reader.meters(), options, (streams) => readStreams(streams, reader, options));
+}
+
+function readStreams(streams: StreamDays[], reader: Nem12Reader, options: ReadOptions): MeterReading {
   const map = options.map ?? {};
-  const streams = reader.used();
   const conflicts = streams.reduce((sum, stream) => sum + stream.conflicts, 0);
   const keep = map.keepRow ?? 'last';
   if (conflicts > 0 && map.keepRow === undefined) refuseConflict(streams);
   const result = streamColumns(streams, keep, options.siteTimeZone);
-  const notes = [...reader.notes(), ...result.notes];
+  const notes = [...reader.notes(streams), ...result.notes];
   if (conflicts > 0) notes.push(note('conflicting-rows-settled', { rows: conflicts, kept: keep }));
   const counts = { format: 'nem12', rowsRead: reader.dayRows, rejectedRows: conflicts };
   return closeReading({ ...result, notes, counts }, map);
@@ -114,18 +118,19 @@ class Nem12Reader {
     this.problems.refuse();
   }
 
-  used(): StreamDays[] {
-    const used = [...this.streams.values()];
-    const meters = new Set(used.map(({ stream }) => stream.meter));
-    if (meters.size > 1) {
-      const found = `${meters.size}: ${[...meters].slice(0, 5).join(', ')}`;
-      throw new InputProblem([{ code: 'not-supported-yet', expected: 'one meter in a file', found }]);
+  /** Streams by the meter they are of; one meter without any where the file has none. */
+  meters(): Map<string, StreamDays[]> {
+    const meters = new Map<string, StreamDays[]>();
+    for (const days of this.streams.values()) {
+      const { meter } = days.stream;
+      meters.set(meter, [...(meters.get(meter) ?? []), days]);
     }
-    return used;
+    return meters.size === 0 ? meters.set('', []) : meters;
   }
 
-  notes(): Remark[] {
-    const days = [...this.streams.values()].flatMap(({ days: versions }) => [...versions.values()]);
+  /** @param streams of the meter that is read */
+  notes(streams: readonly StreamDays[]): Remark[] {
+    const days = streams.flatMap(({ days: versions }) => [...versions.values()]);
     const substituted = days.reduce((sum, { first }) => sum + first.substituted, 0);
     const unstated = days.reduce((sum, { first }) => sum + first.unstated, 0);
     return [

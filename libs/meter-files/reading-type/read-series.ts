@@ -38,7 +38,7 @@ export interface SeriesFile {
  */
 export function readSeries(file: SeriesFile, options: ReadOptions): MeterReading {
   const meters = new Map(file.meters.filter(({ series }) => series.length > 0).map((meter) => [meter.name, meter]));
-  return readMeters(meters, options, (meter, said) => readMeter(file, meter, said));
+  return readMeters(meters, options, (meter, said) => readMeter(file, meter, said), 'leave');
 }
 
 function readMeter(file: SeriesFile, meter: SeriesMeter, options: ReadOptions): MeterReading {

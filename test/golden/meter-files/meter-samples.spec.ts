@@ -532,6 +532,17 @@ describe('NEM12', () => {
     expect(record.beginS).toHaveLength(48);
   });
 
+  it('nem12-two-meters: which is meant is asked, and the map answers', async () => {
+    const { questions } = await questionOf(sample('nem12-two-meters'));
+    // 10 and 20 kWh in every half hour: 20 and 40 kW, 480 and 960 kWh in the day
+    expect(questions[0]!.readings.map(({ map, maxKw, activeKwh }) => [map.meter, maxKw, activeKwh])).toEqual([
+      ['6100000042', 20, 480],
+      ['6100000043', 40, 960],
+    ]);
+    const { record } = await readMeterText(sample('nem12-two-meters'), { map: { meter: '6100000043' } });
+    expect(new Set(record.laggingKvar)).toEqual(new Set([16]));
+  });
+
   it('nem12-mega-15-min: MWh and varh become kW and kvar', async () => {
     const { record } = await readMeterText(sample('nem12-mega-15-min'));
     expect(record.intervalS).toBe(900);
