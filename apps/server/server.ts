@@ -20,6 +20,7 @@ import { OpenApi } from './open-api.js';
 import { OpenApiController } from './open-api-controller.js';
 import { PageController } from './page/page-controller.js';
 import { PageFiles } from './page/page-files.js';
+import { PapersController } from './papers/papers-controller.js';
 import { planRunner } from './planning/plan-runner.js';
 import { Planning } from './planning/planning.js';
 import { PlanningController } from './planning/planning-controller.js';
@@ -53,6 +54,7 @@ const CONTROLLERS: ServerParts['controllers'] = [
   RecordsController,
   PlanningController,
   KeptMapsController,
+  PapersController,
   JobsController,
   DemoController,
   OpenApiController,

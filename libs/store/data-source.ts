@@ -10,13 +10,14 @@ import { type Dialect, speakDialect } from './columns.js';
 import { Job } from './job.js';
 import { KeptMap } from './kept-map.js';
 import { Milestone } from './milestone.js';
+import { Paper } from './paper.js';
 import { ProposalFile } from './proposal-file.js';
 import { RecordColumn } from './record-column.js';
 import { Revision } from './revision.js';
 import { StoredRecord } from './stored-record.js';
 import { StoredSite } from './stored-site.js';
 
-const ENTITIES = [StoredSite, StoredRecord, RecordColumn, Revision, ProposalFile, Job, Milestone, KeptMap];
+const ENTITIES = [StoredSite, StoredRecord, RecordColumn, Revision, ProposalFile, Job, Milestone, KeptMap, Paper];
 const BUSY_MS = 5000;
 
 /** Where the data is kept. */
