@@ -20,6 +20,8 @@ import { OpenApi } from './open-api.js';
 import { OpenApiController } from './open-api-controller.js';
 import { PageController } from './page/page-controller.js';
 import { PageFiles } from './page/page-files.js';
+import { LOCAL_ACTOR } from './people/actor.js';
+import { Admission } from './people/admission.js';
 import { planRunner } from './planning/plan-runner.js';
 import { Planning } from './planning/planning.js';
 import { PlanningController } from './planning/planning-controller.js';
@@ -145,16 +147,19 @@ async function serve(
   });
   const app = await NestFactory.create<NestFastifyApplication>(module, adapter, { logger: log, bodyParser: false });
   app.useGlobalFilters(new ProblemFilter(log));
-  await harden(fastify, { settings, log });
+  const admission = new Admission(async () => LOCAL_ACTOR);
+  await harden(fastify, { settings, log, admission });
   await app.init();
-  refuseUndeclared(routesOf(app), registered);
+  const routes = routesOf(app);
+  refuseUndeclared(routes, registered);
+  admission.learn(routes);
   app.get(OpenApi).describe(app);
   return app;
 }
 
 async function harden(
   fastify: FastifyInstance,
-  { settings, log }: { settings: Settings; log: ServerLog },
+  { settings, log, admission }: { settings: Settings; log: ServerLog; admission: Admission },
 ): Promise<void> {
   // Served by plain http on this machine: asking a browser for https would leave the page blank.
   await fastify.register(helmet, {
@@ -165,7 +170,10 @@ async function harden(
     limits: { fileSize: settings.uploadBytes, files: 1, fields: 10, fieldSize: 100_000, parts: 11 },
   });
   refuseOtherBodies(fastify);
-  fastify.addHook('onRequest', async (request) => refuseForeign(request));
+  fastify.addHook('onRequest', async (request) => {
+    refuseForeign(request);
+    await admission.admit(request);
+  });
   fastify.addHook('onResponse', async (request, reply) => {
     const route = request.routeOptions.url ?? 'none';
     log.answered({ method: request.method, route, status: reply.statusCode, ms: Math.round(reply.elapsedTime) });

@@ -12,6 +12,7 @@ import { IssuedPaper } from './issued-paper.js';
 import { Job } from './job.js';
 import { KeptMap } from './kept-map.js';
 import { Milestone } from './milestone.js';
+import { Organisation } from './organisation.js';
 import { ProposalFile } from './proposal-file.js';
 import { RecordColumn } from './record-column.js';
 import { ReviewStanding } from './review-standing.js';
@@ -19,10 +20,19 @@ import { Revision } from './revision.js';
 import { StoredRecord } from './stored-record.js';
 import { StoredSite } from './stored-site.js';
 
-const REVIEW_ENTITIES = [AuditEntry, ReviewStanding, IssuedPaper];
 const ENTITIES = [
-  ...[StoredSite, StoredRecord, RecordColumn, Revision, ProposalFile, Job, Milestone, KeptMap],
-  ...REVIEW_ENTITIES,
+  Organisation,
+  StoredSite,
+  StoredRecord,
+  RecordColumn,
+  Revision,
+  ProposalFile,
+  Job,
+  Milestone,
+  KeptMap,
+  AuditEntry,
+  ReviewStanding,
+  IssuedPaper,
 ];
 const BUSY_MS = 5000;
 

@@ -10,20 +10,21 @@ export function noSite(id: string): InputProblem {
 }
 
 /**
- * Adds a site under the next number of this installation; call it inside a write.
+ * Adds a site under the next number of its organisation; call it inside a write.
  * @param manager the write's manager
- * @param site id, name and document
+ * @param site id, organisation, name and document
  * @param now moment of creation
  */
 export async function insertSite(
   manager: EntityManager,
-  site: Pick<StoredSite, 'id' | 'name' | 'document'>,
+  site: Pick<StoredSite, 'id' | 'organisationId' | 'name' | 'document'>,
   now: Date,
 ): Promise<StoredSite> {
   await waitForNumber(manager);
   const { last } = (await manager
     .createQueryBuilder(StoredSite, 'site')
     .select('MAX(site.number)', 'last')
+    .where('site.organisationId = :organisationId', { organisationId: site.organisationId })
     .getRawOne<{ last: number | null }>()) ?? { last: null };
   const row: StoredSite = {
     ...site,

@@ -4,6 +4,7 @@ import { recordBytes } from '#libs/contract/record-hash.js';
 import { createLoadRecord, type RecordSummary } from '#libs/engine/index.js';
 import type { Person, ReviewAct } from '#libs/review/review-act.js';
 import { IssuedPaper } from '#libs/store/issued-paper.js';
+import { FIRST_ORGANISATION } from '#libs/store/organisation.js';
 import { frozenMark } from '#libs/store/plan-hash.js';
 import { insertRecord } from '#libs/store/records.js';
 import { carryOut, type VersionedReview } from '#libs/store/reviews.js';
@@ -54,7 +55,7 @@ export async function storedRevision(store: Store, id: string, count = 1): Promi
   const bytes = madePaper(revision, 'draft, not reviewed');
   await store.write(async (manager) => {
     if (count === 1) {
-      await insertSite(manager, { id, name: 'Alder Works', document: { name: 'Alder Works' } }, NOW);
+      await insertSite(manager, { id, organisationId: FIRST_ORGANISATION, name: 'Alder Works', document: {} }, NOW);
       const facts = {
         ...{ id: `${id}-record`, siteId: id, hash: recordHash, summary: {} as RecordSummary, quality: {} },
         ...{ fileName: null, fileHash: recordHash, fileBytes: 1, fileHeader: null, createdAt: NOW },

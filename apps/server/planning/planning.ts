@@ -62,7 +62,7 @@ export class Planning {
   }
 
   async #recordOf(siteId: string, recordId: string | undefined): Promise<StoredRecord | null> {
-    if (recordId !== undefined) return findRecord(this.store, siteId, recordId);
+    if (recordId !== undefined) return findRecord(this.store, { id: siteId }, recordId);
     const [latest] = await this.store.read((manager) =>
       manager.find(StoredRecord, { where: { siteId }, order: { createdAt: 'DESC', id: 'ASC' }, take: 1 }),
     );
