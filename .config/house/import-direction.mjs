@@ -34,7 +34,7 @@ export const MAY_IMPORT = {
   'libs/engine': [],
   'libs/contract': ['libs/engine'],
   'libs/meter-files': ['libs/engine', 'libs/contract'],
-  'libs/present': ['libs/engine'],
+  'libs/present': ['libs/engine', 'libs/review'],
   'libs/review': ['libs/engine', 'libs/contract'],
   'libs/proposal': ['libs/engine', 'libs/present'],
   'libs/store': ['libs/engine', 'libs/contract', 'libs/review', 'migrations'],

@@ -18,6 +18,7 @@ import { KeptMapsController } from './kept-maps/kept-maps-controller.js';
 import { refuseForeign } from './local-requests.js';
 import { OpenApi } from './open-api.js';
 import { OpenApiController } from './open-api-controller.js';
+import type { Confirm } from './people/confirm.js';
 import { PageController } from './page/page-controller.js';
 import { PageFiles } from './page/page-files.js';
 import { LOCAL_ACTOR } from './people/actor.js';
@@ -32,10 +33,15 @@ import { RecordsController } from './records/records-controller.js';
 import { Spool } from './records/spool.js';
 import { UploadIntake } from './records/upload-intake.js';
 import { refuseOtherBodies } from './request-bodies.js';
+import { DifferencesController } from './review/differences-controller.js';
+import { ReviewController } from './review/review-controller.js';
+import { ReviewPageController } from './review/review-page-controller.js';
+import { Reviews } from './review/reviews.js';
+import { VerifyController } from './review/verify-controller.js';
 import { ServerLog } from './server-log.js';
 import type { Settings } from './settings.js';
 import { SitesController } from './sites/sites-controller.js';
-import { JOBS } from './tokens.js';
+import { CONFIRM, JOBS } from './tokens.js';
 import { UnknownController } from './unknown-controller.js';
 
 /** What may stand in for the program's own, in tests. */
@@ -54,12 +60,19 @@ const CONTROLLERS: ServerParts['controllers'] = [
   SitesController,
   RecordsController,
   PlanningController,
+  ReviewController,
+  ReviewPageController,
+  DifferencesController,
+  VerifyController,
   KeptMapsController,
   JobsController,
   DemoController,
   OpenApiController,
   UnknownController,
 ];
+
+/** As long as nobody has a password, being at this machine is what confirms an approval. */
+const withoutAccounts: Confirm = async () => undefined;
 
 @Module({})
 class ServerModule {}
@@ -107,6 +120,8 @@ export async function createServer(
       { provide: RecordImport, useValue: importer },
       UploadIntake,
       Planning,
+      Reviews,
+      { provide: CONFIRM, useValue: withoutAccounts },
       {
         provide: 'closing',
         useValue: {

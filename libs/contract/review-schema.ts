@@ -21,7 +21,7 @@ export const submitSchema = z
   .meta({ id: 'SendForReview' });
 
 export const acceptFindingSchema = z
-  .strictObject({ finding: label(12).describe('its id, such as "F2"'), reason })
+  .strictObject({ finding: label(400).describe('its id, as the review lists it'), reason })
   .meta({ id: 'AcceptFinding' });
 
 export const handCheckSchema = z
@@ -112,3 +112,13 @@ export const againSchema = z
     reason: label(2000).optional(),
   })
   .meta({ id: 'ComputeAgain' });
+
+export type SendForReview = z.output<typeof submitSchema>;
+export type AcceptFinding = z.output<typeof acceptFindingSchema>;
+export type HandCheckGiven = z.output<typeof handCheckSchema>;
+export type Comment = z.output<typeof commentSchema>;
+export type Reason = z.output<typeof reasonSchema>;
+export type Supersede = z.output<typeof supersedeSchema>;
+export type Approve = z.output<typeof approveSchema>;
+export type Commission = z.output<typeof commissionSchema>;
+export type ComputeAgain = z.output<typeof againSchema>;

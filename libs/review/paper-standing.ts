@@ -44,6 +44,9 @@ export interface PaperAnswer {
   paper: KnownPaper | null;
 }
 
+/** No proposal is larger, nor is a signed one with its certificates. */
+export const MOST_PAPER_BYTES = 20_000_000;
+
 const MOST_ENDS = 64;
 
 /**

@@ -28,7 +28,7 @@ export type WeighingLevel = 'blocks issue' | 'to be accepted';
 
 /** A finding of the plan as it was sent for review. */
 export interface ReviewFinding {
-  /** "F1", "F2" … in the order the plan lists them */
+  /** code and place, unlike that of every other finding of the plan */
   id: string;
   level: WeighingLevel;
   what: string;

@@ -6,6 +6,7 @@ import { ProposalFile } from './proposal-file.js';
 import { type RegisterFault, registerFaults } from './register.js';
 import { readReview } from './reviews.js';
 import { Revision } from './revision.js';
+import { StoredSite } from './stored-site.js';
 
 /** What is said of a paper, and of the register that says it. */
 export interface VerifiedPaper extends PaperAnswer {
@@ -15,6 +16,17 @@ export interface VerifiedPaper extends PaperAnswer {
 
 /** Narrows a search of revisions to those somebody may see. */
 export type Seen = (search: SelectQueryBuilder<Revision>) => SelectQueryBuilder<Revision>;
+
+/** Every revision of the register: for whoever has the database itself. */
+export const everything: Seen = (search) => search;
+
+/** The revisions of one organisation; to anybody else they do not exist. */
+export function ofOrganisation(organisationId: string): Seen {
+  return (search) =>
+    search.innerJoin(StoredSite, 'owner', 'owner.id = revision.siteId AND owner.organisationId = :organisationId', {
+      organisationId,
+    });
+}
 
 const MOST_FOUND = 20;
 

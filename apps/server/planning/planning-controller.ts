@@ -1,20 +1,20 @@
 import { Body, Controller, Get, Inject, Param, Post, Query, Res } from '@nestjs/common';
 import type { FastifyReply } from 'fastify';
 import { type PlanRequest, planRequestSchema } from '#libs/contract/plan-request-schema.js';
-import { InputProblem } from '#libs/engine/index.js';
 import type { Jobs } from '#libs/jobs/jobs.js';
 import { ProposalFile } from '#libs/store/proposal-file.js';
 import { Revision } from '#libs/store/revision.js';
 import { Store } from '#libs/store/store.js';
 import { ContractPipe } from '../contract-pipe.js';
 import { showJob } from '../jobs/show-job.js';
-import { pathNumber } from '../path-number.js';
 import { type Actor, actorOf, CurrentActor } from '../people/actor.js';
 import { Needs } from '../people/needs.js';
 import { findSite } from '../sites/find-site.js';
 import { JOBS } from '../tokens.js';
+import { findRevision } from './find-revision.js';
 import type { FrozenPlan } from './plan-request.js';
 import { Planning } from './planning.js';
+import { personOf } from '../review/person-of.js';
 import { refuseEnded } from './refuse-ended.js';
 import { revisionHead, revisionJson } from './show-revision.js';
 import { waitS } from './wait-time.js';
@@ -66,13 +66,17 @@ export class PlanningController {
   @Get('revisions/:revision')
   @Needs('viewer', 'Gives a revision: frozen inputs, hashes, engine version and the result.')
   async get(@Param('siteId') siteId: string, @Param('revision') revision: string, @Res() reply: FastifyReply) {
-    return this.#send(await this.#find(actorOf(reply.request), siteId, revision), reply);
+    return this.#send(await findRevision(this.store, actorOf(reply.request), { siteId, revision }), reply);
   }
 
   @Get('revisions/:revision/proposal.pdf')
   @Needs('viewer', 'Gives the proposal of a revision, the same bytes at every download.')
   async proposal(@Param('siteId') siteId: string, @Param('revision') revision: string, @Res() reply: FastifyReply) {
-    const { id, number, revision: count } = await this.#find(actorOf(reply.request), siteId, revision);
+    const {
+      id,
+      number,
+      revision: count,
+    } = await findRevision(this.store, actorOf(reply.request), { siteId, revision });
     const file = await this.store.read((manager) => manager.findOneByOrFail(ProposalFile, { revisionId: id }));
     return reply
       .type('application/pdf')
@@ -89,23 +93,15 @@ export class PlanningController {
   ) {
     const actor = actorOf(reply.request);
     const site = await findSite(this.store, actor, siteId);
-    const asked = await this.planning.ask(kind, site, body);
+    const asked = await this.planning.ask(kind, site, body, personOf(actor));
     if ('contentHash' in asked) return this.#send(asked, reply.status(200));
     const job = waitS === 0 ? asked : await this.jobs.result(asked.id, waitS);
     if (job.state === 'done') {
       reply.status(201).header('location', showJob(job).links.revision ?? '');
-      return this.#send(await this.#find(actor, siteId, `${job.revision}`), reply);
+      return this.#send(await findRevision(this.store, actor, { siteId, revision: `${job.revision}` }), reply);
     }
     refuseEnded(job);
     return reply.status(202).header('location', showJob(job).links.self).send(showJob(job));
-  }
-
-  async #find(actor: Actor, siteId: string, revision: string): Promise<Revision> {
-    const { id } = await findSite(this.store, actor, siteId);
-    const number = pathNumber(revision, 'revision');
-    const found = await this.store.read((manager) => manager.findOneBy(Revision, { siteId: id, revision: number }));
-    if (found !== null) return found;
-    throw new InputProblem([{ code: 'not-found', expected: 'a revision of this site', found: `${number}` }]);
   }
 
   #send(revision: Revision, reply: FastifyReply) {
