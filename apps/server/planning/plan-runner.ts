@@ -13,6 +13,7 @@ import { StoredSite } from '#libs/store/stored-site.js';
 import type { PlanTask, PlanValue } from './compute-plan.js';
 import type { FrozenPlan } from './plan-request.js';
 import { contentOf } from './planning.js';
+import { revisionHistory } from './revision-history.js';
 
 /**
  * Does the jobs of planning: computes in a worker thread, then writes revision, proposal and the job's end at once.
@@ -46,7 +47,8 @@ async function attempt({ store, pool, job, frozen, record }: Work, hands: Hands)
   if (site === null) throw noSite(job.siteId);
   const content = contentOf(frozen);
   const revision = numberedRevision(site, frozen, content);
-  const task: PlanTask = { ...frozen, record, frame: frameOf(revision) };
+  const history = await revisionHistory(store, job.siteId, revision.revision);
+  const task: PlanTask = { ...frozen, record, frame: { ...frameOf(revision), history } };
   const { result, proposal, ...rest } = await pool.run<PlanValue>('computePlan', task, hands);
   const sha256 = createHash('sha256').update(proposal).digest('hex');
   const complete = { ...revision, ...rest, result: JSON.stringify(result), verdict: result.verdict };
@@ -82,6 +84,18 @@ function numberedRevision(site: StoredSite, frozen: FrozenPlan, content: { text:
   };
 }
 
-function frameOf({ number, revision, author, contentHash, engineVersion }: Numbered): PlanTask['frame'] {
-  return { number, revision, state: 'draft, not reviewed', preparedBy: author, contentHash, engineVersion };
+function frameOf(revision: Numbered): PlanTask['frame'] {
+  const { number, revision: count, author, reason, contentHash, recordHash, engineVersion, createdAt } = revision;
+  return {
+    ...{
+      number,
+      revision: count,
+      state: 'draft, not reviewed',
+      preparedBy: author,
+      contentHash,
+      recordHash,
+      engineVersion,
+    },
+    ...{ reason, date: createdAt.toISOString().slice(0, 10) },
+  };
 }
