@@ -2,6 +2,7 @@ import type { EstimateOutcome, Outcome } from '#libs/engine/index.js';
 import { blocking, type Finding, findingCount, findingNumbers, findings } from '#libs/present/findings.js';
 import type { FindingLevel } from '#libs/present/message.js';
 import { rulesEvaluated, rulesWords } from '#libs/present/rules-evaluated.js';
+import { blankCell } from './blank-cell.js';
 import { INK, PAPER, SOFT, STROKE } from './ink.js';
 import { NOTE, type Paper } from './paper.js';
 import { type Cell, type Column, drawTable } from './table.js';
@@ -39,7 +40,7 @@ export function drawFindings(paper: Paper, outcome: Outcome | EstimateOutcome): 
 function findingRow(paper: Paper, finding: Finding): Cell[] {
   const { level, what, source, consequence } = finding;
   const { value, limit } = findingNumbers(finding);
-  const accepted = level === 'to be accepted' ? signLine(paper) : '';
+  const accepted = level === 'to be accepted' ? blankCell(paper, -1) : '';
   const named: Piece[] = source === '' ? [what] : [what, NEW_LINE, { text: source, ink: SOFT, size: 8.4 }];
   return [levelCell(paper, level), named, value, limit, consequence, accepted];
 }
@@ -65,20 +66,6 @@ function levelCell(paper: Paper, level: FindingLevel): Cell {
           .lineWidth(STROKE.tick)
           .rect(...box)
           .stroke(INK);
-    },
-  };
-}
-
-function signLine(paper: Paper): Cell {
-  return {
-    pieces: [''],
-    inset: 0,
-    draw: ({ x, y, width, height }) => {
-      paper.doc
-        .lineWidth(STROKE.tick)
-        .moveTo(x, y + height - 1)
-        .lineTo(x + width, y + height - 1)
-        .stroke(INK);
     },
   };
 }

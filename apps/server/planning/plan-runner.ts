@@ -13,6 +13,7 @@ import { noSite } from '#libs/store/sites.js';
 import type { Store } from '#libs/store/store.js';
 import { StoredSite } from '#libs/store/stored-site.js';
 import type { PlanTask, PlanValue } from './compute-plan.js';
+import { frameOf } from './frame-of.js';
 import type { FrozenPlan } from './plan-request.js';
 import { contentOf } from './planning.js';
 
@@ -48,7 +49,7 @@ async function attempt({ store, pool, job, frozen, record }: Work, hands: Hands)
   if (site === null) throw noSite(job.siteId);
   const content = contentOf(frozen);
   const revision = numberedRevision(site, frozen, content);
-  const task: PlanTask = { ...frozen, record, frame: frameOf(revision) };
+  const task: PlanTask = { ...frozen, record, frame: await frameOf(store, revision) };
   const { result, proposal, ...rest } = await pool.run<PlanValue>('computePlan', task, hands);
   const sha256 = createHash('sha256').update(proposal).digest('hex');
   const complete: Revision = { ...revision, ...rest, result: JSON.stringify(result), verdict: result.verdict };
@@ -89,8 +90,4 @@ function numberedRevision(site: StoredSite, frozen: FrozenPlan, content: { text:
     author: frozen.author,
     reason: frozen.reason,
   };
-}
-
-function frameOf({ number, revision, author, contentHash, engineVersion }: Numbered): PlanTask['frame'] {
-  return { number, revision, state: 'draft, not reviewed', preparedBy: author, contentHash, engineVersion };
 }

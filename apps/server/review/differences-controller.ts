@@ -12,6 +12,7 @@ import { showJob } from '../jobs/show-job.js';
 import { actorOf } from '../people/actor.js';
 import { Needs } from '../people/needs.js';
 import { findRevision, type RevisionPath } from '../planning/find-revision.js';
+import { frameOf } from '../planning/frame-of.js';
 import { Planning } from '../planning/planning.js';
 import { refuseEnded } from '../planning/refuse-ended.js';
 import { revisionHead } from '../planning/show-revision.js';
@@ -63,11 +64,8 @@ export class DifferencesController {
 
   /** Nothing is stored: a plan never changes because it was looked at with another engine. */
   async #compare(revision: Revision) {
-    const { number, revision: count, author, contentHash } = revision;
-    const now = await recompute({ store: this.store, pool: this.pool }, revision, {
-      ...{ number, revision: count, state: 'draft, not reviewed', preparedBy: author, contentHash },
-      engineVersion: ENGINE_VERSION,
-    });
+    const frame = { ...(await frameOf(this.store, revision)), engineVersion: ENGINE_VERSION };
+    const now = await recompute({ store: this.store, pool: this.pool }, revision, frame);
     const before = compared(revision);
     const result = JSON.stringify(now.result);
     const { proposed } = now;
