@@ -6,8 +6,8 @@ import { defineConfig } from 'vitest/config';
 const conditions = ['source', ...defaultServerConditions];
 const soak = process.env.VARWRIGHT_SOAK === '1';
 const withDatabases = ['libs/store/**/*.spec.ts', 'libs/jobs/**/*.spec.ts', 'apps/server/**/*.spec.ts'];
-// What is timed, or killed in the middle of something, has the machine to itself.
-const alone = ['test/browser/pace.spec.ts', 'test/faults/*-killed.spec.ts', 'test/faults/*-memory.spec.ts'];
+// What is timed has the machine to itself.
+const alone = ['test/browser/pace.spec.ts'];
 const startPostgres = ['test/support/postgres.ts'];
 
 const project = (name: string, include: string[], timeoutMs: number, more: object = {}) => ({
