@@ -6,11 +6,14 @@ import {
   type ReplicationMode,
 } from 'typeorm';
 import { migrations } from '#migrations/migrations.js';
+import { ApiKey } from './api-key.js';
 import { type Dialect, speakDialect } from './columns.js';
 import { Job } from './job.js';
 import { KeptMap } from './kept-map.js';
 import { Milestone } from './milestone.js';
 import { Organisation } from './organisation.js';
+import { Person } from './person.js';
+import { PersonSession } from './person-session.js';
 import { ProposalFile } from './proposal-file.js';
 import { RecordColumn } from './record-column.js';
 import { Revision } from './revision.js';
@@ -18,15 +21,8 @@ import { StoredRecord } from './stored-record.js';
 import { StoredSite } from './stored-site.js';
 
 const ENTITIES = [
-  Organisation,
-  StoredSite,
-  StoredRecord,
-  RecordColumn,
-  Revision,
-  ProposalFile,
-  Job,
-  Milestone,
-  KeptMap,
+  ...[Organisation, Person, PersonSession, ApiKey],
+  ...[StoredSite, StoredRecord, RecordColumn, Revision, ProposalFile, Job, Milestone, KeptMap],
 ];
 const BUSY_MS = 5000;
 

@@ -1,5 +1,6 @@
 import type { EntityManager } from 'typeorm';
 import { InputProblem } from '#libs/engine/index.js';
+import { StaleVersion } from './stale-version.js';
 import { StoredSite } from './stored-site.js';
 
 /** A site that is not there. */
@@ -68,7 +69,7 @@ export async function replaceSite(
   if (affected === 1) return seen + 1;
   const current = await manager.findOneBy(StoredSite, { id: site.id });
   if (current === null) throw noSite(site.id);
-  throw new InputProblem([{ code: 'stale', expected: `version ${current.version}`, found: `version ${seen}` }]);
+  throw new StaleVersion(seen, current.version);
 }
 
 /**
@@ -81,8 +82,6 @@ export async function replaceSite(
 export async function deleteSite(manager: EntityManager, id: string, seen: number | null): Promise<void> {
   const current = await manager.findOneBy(StoredSite, { id });
   if (current === null) throw noSite(id);
-  if (seen !== null && current.version !== seen) {
-    throw new InputProblem([{ code: 'stale', expected: `version ${current.version}`, found: `version ${seen}` }]);
-  }
+  if (seen !== null && current.version !== seen) throw new StaleVersion(seen, current.version);
   await manager.delete(StoredSite, { id });
 }
