@@ -34,4 +34,6 @@ export interface ProposalFrame {
   /** revisions before this one, the first of them first */
   history?: readonly PastRevision[];
   paper?: PaperSize;
+  /** the site's logo, a PNG or JPEG file */
+  logo?: Uint8Array | null;
 }

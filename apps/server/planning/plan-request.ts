@@ -11,4 +11,8 @@ export interface FrozenPlan {
   recordHash: string | null;
   author: string | null;
   reason: string | null;
+  /** sheet and logo of the proposal; absent where none was asked for */
+  paper?: 'A4' | 'Letter';
+  /** base64 */
+  logo?: string;
 }

@@ -48,7 +48,7 @@ async function attempt({ store, pool, job, frozen, record }: Work, hands: Hands)
   const content = contentOf(frozen);
   const revision = numberedRevision(site, frozen, content);
   const history = await revisionHistory(store, job.siteId, revision.revision);
-  const task: PlanTask = { ...frozen, record, frame: { ...frameOf(revision), history } };
+  const task: PlanTask = { ...frozen, record, frame: { ...frameOf(revision), ...sheetOf(frozen), history } };
   const { result, proposal, ...rest } = await pool.run<PlanValue>('computePlan', task, hands);
   const sha256 = createHash('sha256').update(proposal).digest('hex');
   const complete = { ...revision, ...rest, result: JSON.stringify(result), verdict: result.verdict };
@@ -97,5 +97,12 @@ function frameOf(revision: Numbered): PlanTask['frame'] {
       engineVersion,
     },
     ...{ reason, date: createdAt.toISOString().slice(0, 10) },
+  };
+}
+
+function sheetOf({ paper, logo }: FrozenPlan): Pick<PlanTask['frame'], 'paper' | 'logo'> {
+  return {
+    ...(paper === undefined ? {} : { paper }),
+    ...(logo === undefined ? {} : { logo: new Uint8Array(Buffer.from(logo, 'base64')) }),
   };
 }

@@ -8,6 +8,7 @@ import { readSiteWithMathjs } from '#libs/contract/read-site-with-mathjs.js';
 import { zoneTableOf } from '#libs/contract/time-zone.js';
 import { ENGINE_VERSION, InputProblem } from '#libs/engine/index.js';
 import type { Jobs } from '#libs/jobs/jobs.js';
+import { readLogo } from '#libs/proposal/read-logo.js';
 import type { Job } from '#libs/store/job.js';
 import { Revision } from '#libs/store/revision.js';
 import { Store } from '#libs/store/store.js';
@@ -37,6 +38,7 @@ export class Planning {
     }
     const record = await this.#recordOf(stored.id, request.recordId);
     if (record === null && site.estimate === undefined) throw nothingToPlanWith();
+    if (request.logo !== undefined) readLogo(Buffer.from(request.logo, 'base64'));
     const zone = record === null ? estimateZone(site) : zoneTableOf(site.timeZone, record);
     const frozen: FrozenPlan = {
       kind,
@@ -46,6 +48,8 @@ export class Planning {
       recordHash: record?.hash ?? null,
       author: request.author ?? null,
       reason: request.reason ?? null,
+      ...(request.paper === undefined ? {} : { paper: request.paper }),
+      ...(request.logo === undefined ? {} : { logo: request.logo }),
     };
     const { hash } = contentOf(frozen);
     const standing = await this.store.read((manager) =>
