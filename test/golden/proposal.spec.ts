@@ -30,6 +30,7 @@ const SECTIONS = [
   'Revision history',
   'Verification',
 ];
+
 const NUMBERS = SECTIONS.map((_, at) => at + 1);
 
 const SMALL = { days: 40 };
