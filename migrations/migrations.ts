@@ -3,6 +3,7 @@ import { ExtendedRecords1764634000000 } from './1764634000000-extended-records.j
 import { EstimatedRevisions1764637200000 } from './1764637200000-estimated-revisions.js';
 import { Organisations1764640800000 } from './1764640800000-organisations.js';
 import { People1764644400000 } from './1764644400000-people.js';
+import { LinksAndAnswers1764648000000 } from './1764648000000-links-and-answers.js';
 
 /** Every change of the schema, oldest first. */
 export const migrations = [
@@ -11,4 +12,5 @@ export const migrations = [
   EstimatedRevisions1764637200000,
   Organisations1764640800000,
   People1764644400000,
+  LinksAndAnswers1764648000000,
 ];

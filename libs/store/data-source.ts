@@ -9,6 +9,7 @@ import { migrations } from '#migrations/migrations.js';
 import { ApiKey } from './api-key.js';
 import { type Dialect, speakDialect } from './columns.js';
 import { Job } from './job.js';
+import { KeptAnswer } from './kept-answer.js';
 import { KeptMap } from './kept-map.js';
 import { Milestone } from './milestone.js';
 import { Organisation } from './organisation.js';
@@ -17,11 +18,12 @@ import { PersonSession } from './person-session.js';
 import { ProposalFile } from './proposal-file.js';
 import { RecordColumn } from './record-column.js';
 import { Revision } from './revision.js';
+import { RevisionLink } from './revision-link.js';
 import { StoredRecord } from './stored-record.js';
 import { StoredSite } from './stored-site.js';
 
 const ENTITIES = [
-  ...[Organisation, Person, PersonSession, ApiKey],
+  ...[Organisation, Person, PersonSession, ApiKey, RevisionLink, KeptAnswer],
   ...[StoredSite, StoredRecord, RecordColumn, Revision, ProposalFile, Job, Milestone, KeptMap],
 ];
 const BUSY_MS = 5000;

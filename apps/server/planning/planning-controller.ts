@@ -1,18 +1,17 @@
 import { Body, Controller, Get, Inject, Param, Post, Query, Res } from '@nestjs/common';
 import type { FastifyReply } from 'fastify';
 import { type PlanRequest, planRequestSchema } from '#libs/contract/plan-request-schema.js';
-import { InputProblem } from '#libs/engine/index.js';
 import type { Jobs } from '#libs/jobs/jobs.js';
 import { ProposalFile } from '#libs/store/proposal-file.js';
 import { Revision } from '#libs/store/revision.js';
 import { Store } from '#libs/store/store.js';
 import { ContractPipe } from '../contract-pipe.js';
 import { showJob } from '../jobs/show-job.js';
-import { pathNumber } from '../path-number.js';
 import { type Actor, actorOf, CurrentActor, LOCAL_ACTOR } from '../people/actor.js';
 import { Needs } from '../people/needs.js';
 import { findSite } from '../sites/find-site.js';
 import { JOBS } from '../tokens.js';
+import { findRevision } from './find-revision.js';
 import type { FrozenPlan } from './plan-request.js';
 import { Planning } from './planning.js';
 import { refuseEnded } from './refuse-ended.js';
@@ -102,12 +101,8 @@ export class PlanningController {
     return reply.status(202).header('location', showJob(job).links.self).send(showJob(job));
   }
 
-  async #find(actor: Actor, siteId: string, revision: string): Promise<Revision> {
-    const { id } = await findSite(this.store, actor, siteId);
-    const number = pathNumber(revision, 'revision');
-    const found = await this.store.read((manager) => manager.findOneBy(Revision, { siteId: id, revision: number }));
-    if (found !== null) return found;
-    throw new InputProblem([{ code: 'not-found', expected: 'a revision of this site', found: `${number}` }]);
+  #find(actor: Actor, siteId: string, revision: string): Promise<Revision> {
+    return findRevision(this.store, actor, { siteId, revision });
   }
 
   #send(revision: Revision, reply: FastifyReply) {
