@@ -4,6 +4,7 @@ import { EstimatedRevisions1764637200000 } from './1764637200000-estimated-revis
 import { Organisations1764640800000 } from './1764640800000-organisations.js';
 import { People1764644400000 } from './1764644400000-people.js';
 import { LinksAndAnswers1764648000000 } from './1764648000000-links-and-answers.js';
+import { Reviews1764651600000 } from './1764651600000-reviews.js';
 
 /** Every change of the schema, oldest first. */
 export const migrations = [
@@ -13,4 +14,5 @@ export const migrations = [
   Organisations1764640800000,
   People1764644400000,
   LinksAndAnswers1764648000000,
+  Reviews1764651600000,
 ];

@@ -1,11 +1,11 @@
 import type { FastifyInstance, FastifyRequest } from 'fastify';
 import { RefusedRequest } from './refused-request.js';
 
-const UPLOADS = /\/records(\/:recordId\/revisions)?$/;
+const UPLOADS = /\/records(\/:recordId\/revisions)?$|^\/api\/verify$/;
 /** Pages that work without scripts send forms; nothing else takes them. */
 const FORMS = /^\/(sign-in|sign-out|people|account)(\/|$)/;
 const FORM_TYPE = 'application/x-www-form-urlencoded';
-const FILE_TYPES = ['text/csv', 'application/octet-stream'];
+const FILE_TYPES = ['text/csv', 'application/octet-stream', 'application/pdf'];
 
 /**
  * Reads bodies as JSON, on the routes that take files as files, and refuses every other kind.

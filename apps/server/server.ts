@@ -22,6 +22,7 @@ import { foreignCheck } from './local-requests.js';
 import { Once, replay } from './once/once.js';
 import { OpenApi } from './open-api.js';
 import { OpenApiController } from './open-api-controller.js';
+import type { Confirm } from './people/confirm.js';
 import { PageController } from './page/page-controller.js';
 import { PageFiles } from './page/page-files.js';
 import { Accounts, type Reach } from './people/accounts.js';
@@ -43,10 +44,15 @@ import { RecordsController } from './records/records-controller.js';
 import { Spool } from './records/spool.js';
 import { UploadIntake } from './records/upload-intake.js';
 import { refuseOtherBodies, takesFile } from './request-bodies.js';
+import { DifferencesController } from './review/differences-controller.js';
+import { ReviewController } from './review/review-controller.js';
+import { ReviewPageController } from './review/review-page-controller.js';
+import { Reviews } from './review/reviews.js';
+import { VerifyController } from './review/verify-controller.js';
 import { ServerLog } from './server-log.js';
 import { isLocal, type Settings } from './settings.js';
 import { SitesController } from './sites/sites-controller.js';
-import { JOBS } from './tokens.js';
+import { CONFIRM, JOBS } from './tokens.js';
 import { UnknownController } from './unknown-controller.js';
 
 /** What may stand in for the program's own, in tests. */
@@ -67,6 +73,10 @@ const CONTROLLERS: ServerParts['controllers'] = [
   SitesController,
   RecordsController,
   PlanningController,
+  ReviewController,
+  ReviewPageController,
+  DifferencesController,
+  VerifyController,
   KeptMapsController,
   JobsController,
   SessionController,
@@ -131,6 +141,8 @@ export async function createServer(
       { provide: RecordImport, useValue: importer },
       UploadIntake,
       Planning,
+      Reviews,
+      { provide: CONFIRM, useValue: confirmBy(accounts) },
       People,
       Keys,
       {
@@ -231,4 +243,9 @@ async function harden(
     const route = request.routeOptions.url ?? 'none';
     log.answered({ method: request.method, route, status: reply.statusCode, ms: Math.round(reply.elapsedTime) });
   });
+}
+
+/** As long as nobody has a password, being at this machine is what confirms an approval. */
+function confirmBy(accounts: Accounts): Confirm {
+  return (actor, password) => accounts.confirm(actor, password ?? '');
 }

@@ -1,5 +1,7 @@
 import type { EntityManager } from 'typeorm';
 import { InputProblem } from '#libs/engine/index.js';
+import { IssuedPaper } from './issued-paper.js';
+import { Revision } from './revision.js';
 import { StaleVersion } from './stale-version.js';
 import { StoredSite } from './stored-site.js';
 
@@ -77,11 +79,24 @@ export async function replaceSite(
  * @param manager the write's manager
  * @param id the site
  * @param seen version the client saw, null where it does not say
- * @throws InputProblem `not-found` or `stale`
+ * @throws InputProblem `not-found`, `stale`, or `conflict` where a paper of it was issued
  */
 export async function deleteSite(manager: EntityManager, id: string, seen: number | null): Promise<void> {
   const current = await manager.findOneBy(StoredSite, { id });
   if (current === null) throw noSite(id);
   if (seen !== null && current.version !== seen) throw new StaleVersion(seen, current.version);
+  await refuseIssued(manager, id);
   await manager.delete(StoredSite, { id });
+}
+
+/** What was issued stays to be downloaded and verified, and its site with it. */
+async function refuseIssued(manager: EntityManager, siteId: string): Promise<void> {
+  const issued = await manager
+    .createQueryBuilder(IssuedPaper, 'paper')
+    .innerJoin(Revision, 'revision', 'revision.id = paper.revisionId')
+    .where('revision.siteId = :siteId', { siteId })
+    .getCount();
+  if (issued === 0) return;
+  const found = `${issued}, which are kept for ever`;
+  throw new InputProblem([{ code: 'conflict', expected: 'a site without approved papers', found }]);
 }

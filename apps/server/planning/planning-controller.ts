@@ -14,6 +14,7 @@ import { JOBS } from '../tokens.js';
 import { findRevision } from './find-revision.js';
 import type { FrozenPlan } from './plan-request.js';
 import { Planning } from './planning.js';
+import { personOf } from '../review/person-of.js';
 import { refuseEnded } from './refuse-ended.js';
 import { revisionHead, revisionJson } from './show-revision.js';
 import { waitS } from './wait-time.js';
@@ -65,13 +66,17 @@ export class PlanningController {
   @Get('revisions/:revision')
   @Needs('viewer', 'Gives a revision: frozen inputs, hashes, engine version and the result.')
   async get(@Param('siteId') siteId: string, @Param('revision') revision: string, @Res() reply: FastifyReply) {
-    return this.#send(await this.#find(actorOf(reply.request), siteId, revision), reply);
+    return this.#send(await findRevision(this.store, actorOf(reply.request), { siteId, revision }), reply);
   }
 
   @Get('revisions/:revision/proposal.pdf')
   @Needs('viewer', 'Gives the proposal of a revision, the same bytes at every download.')
   async proposal(@Param('siteId') siteId: string, @Param('revision') revision: string, @Res() reply: FastifyReply) {
-    const { id, number, revision: count } = await this.#find(actorOf(reply.request), siteId, revision);
+    const {
+      id,
+      number,
+      revision: count,
+    } = await findRevision(this.store, actorOf(reply.request), { siteId, revision });
     const file = await this.store.read((manager) => manager.findOneByOrFail(ProposalFile, { revisionId: id }));
     return reply
       .type('application/pdf')
@@ -90,19 +95,20 @@ export class PlanningController {
     const site = await findSite(this.store, actor, siteId);
     // With an account a plan carries its name, whatever is typed.
     const author = actor === LOCAL_ACTOR ? body.author : actor.name;
-    const asked = await this.planning.ask(kind, site, { ...body, ...(author === undefined ? {} : { author }) });
+    const asked = await this.planning.ask(
+      kind,
+      site,
+      { ...body, ...(author === undefined ? {} : { author }) },
+      personOf(actor),
+    );
     if ('contentHash' in asked) return this.#send(asked, reply.status(200));
     const job = waitS === 0 ? asked : await this.jobs.result(asked.id, waitS);
     if (job.state === 'done') {
       reply.status(201).header('location', showJob(job).links.revision ?? '');
-      return this.#send(await this.#find(actor, siteId, `${job.revision}`), reply);
+      return this.#send(await findRevision(this.store, actor, { siteId, revision: `${job.revision}` }), reply);
     }
     refuseEnded(job);
     return reply.status(202).header('location', showJob(job).links.self).send(showJob(job));
-  }
-
-  #find(actor: Actor, siteId: string, revision: string): Promise<Revision> {
-    return findRevision(this.store, actor, { siteId, revision });
   }
 
   #send(revision: Revision, reply: FastifyReply) {
