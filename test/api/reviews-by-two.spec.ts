@@ -74,7 +74,7 @@ describe('a revision that one prepares and another approves', () => {
     const verify = async (who: MadePerson) => {
       const headers = { ...who.headers, 'content-type': 'application/pdf' };
       const sent = await fetch(`${server.base}/api/verify`, { method: 'POST', headers, body: new Uint8Array(paper) });
-      return (await sent.json()).standing;
+      return ((await sent.json()) as { standing: string }).standing;
     };
     expect([await verify(ours.viewer), await verify(theirs.reviewer)]).toEqual(['approved', 'unknown']);
   });

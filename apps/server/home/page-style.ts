@@ -63,7 +63,7 @@ input[type=checkbox] { width: 24px; height: 24px; vertical-align: middle; accent
 input:focus-visible, textarea:focus-visible, select:focus-visible, button:focus-visible, summary:focus-visible { outline: 3px solid var(--ink); outline-offset: 3px; }
 button { font: inherit; color: inherit; background: transparent; border: 1.5px solid var(--ink); padding: 5px 16px; min-height: 32px; cursor: pointer; }
 button.main { background: var(--ink); color: var(--sheet); }
-.fields { display: grid; grid-template-columns: repeat(auto-fit, minmax(90px, 1fr)); gap: 0 16px; }
+.fields { display: grid; grid-template-columns: repeat(auto-fit, minmax(90px, 1fr)); gap: 0 16px; align-items: end; }
 fieldset { border: 0; border-top: 1px solid var(--hair); margin: 12px 0; padding: 8px 0; }
 legend { padding: 0 8px 0 0; font-weight: 600; }
 .level { font-size: 13px; font-weight: 600; padding: 1px 6px; border: 2px solid var(--ink); }
@@ -73,7 +73,9 @@ legend { padding: 0 8px 0 0; font-weight: 600; }
 [role=alert]:empty, [role=status]:empty { display: none; }
 [role=alert] { color: var(--avoid); font-weight: 600; }
 summary { cursor: pointer; min-height: 24px; padding: 4px 0; }
-.wide { max-width: none; table-layout: fixed; }
+.wide { max-width: none; }
+ol { padding-left: 32px; }
+li { overflow-wrap: anywhere; }
 .wide td, .wide th { text-align: left; overflow-wrap: anywhere; vertical-align: top; }
 footer { padding-bottom: 32px; }
 @media (max-width: 719px) { header, main, footer { padding-left: 14px; padding-right: 14px; } h1 { font-size: 21px; line-height: 26px; } }
