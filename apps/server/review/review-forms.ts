@@ -23,7 +23,7 @@ const MAIN_ACTS = ['submit', 'approve'];
 export function actForm({ base, version }: FormPlace, act: string, button: string, fields: Html | Html[]): Html {
   return html`<form data-act="${base}/${act}" data-seen="&quot;${version}&quot;">
 ${fields}
-<p role="alert"></p><button class="${MAIN_ACTS.includes(act) ? 'main' : ''}">${button}</button></form>`;
+<p role="alert"></p><button class="${MAIN_ACTS.includes(act) ? '' : 'quiet'}">${button}</button></form>`;
 }
 
 /** A field for a line of text. */
