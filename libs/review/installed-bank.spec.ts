@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import { readSite } from '#libs/contract/read-site.js';
-import { type BankStage, readMeasurement } from '#libs/engine/index.js';
+import { type BankStage, readMeasurement, type StageGroup } from '#libs/engine/index.js';
 import { COMMISSIONED } from '../../test/support/made-review.js';
 import { installedBank } from './installed-bank.js';
 
@@ -34,8 +34,10 @@ describe('a bank as it was installed', () => {
   it('gives the capacitance back that the currents stand for', () => {
     const [group] = bank.stages;
     const basis = { nominalV: 400, frequencyHz: 50 };
-    const { reactorPct } = group!;
-    const settled = { ...group!, reactorPct: reactorPct ?? 0 } as never;
+    const settled: StageGroup = {
+      ...{ count: 2, ratedKvar: 50, ratedV: 480, reactorPct: 7, reactorQuality: 30 },
+      ...{ dischargeOhm: null, reactorMaxA: null, switchPeakA: null, fixed: false },
+    };
     const { capacitanceFactor } = readMeasurement(group!.measurements![0]!, settled, basis, 'bank');
     expect(capacitanceFactor).toBeCloseTo(53.8 / 53.88, 3);
   });
