@@ -65,6 +65,20 @@ export const COMMANDS: Record<string, Command> = {
 `,
     load: () => import('./scan.js'),
   },
+  verify: {
+    operand: 'FILE',
+    values: { database: 'URL' },
+    lists: {},
+    flags: ['json'],
+    does: 'say whether a paper is what was approved',
+    details: `  FILE               the PDF; or the 16 digits behind "content" at the head of a page, for a scan
+  --database URL     of the installation that issued it, "sqlite:FILE" or "postgres://…"; else DB_URL, or the server's
+                     own file under DATA_DIR; it is only read
+                     Exit: 0 approved as it stands, also signed afterwards; 6 superseded, withdrawn, a draft or altered;
+                     3 not ours
+`,
+    load: () => import('./verify.js'),
+  },
 };
 
 /**

@@ -1,5 +1,6 @@
 import type { RevisionNumbers } from '#libs/present/revision-numbers.js';
 import type { PaperSize } from './paper.js';
+import type { PrintedReview } from './printed-review.js';
 
 /** States of a proposal, in the words of document control. */
 export type ProposalState = 'draft, not reviewed' | 'for review' | 'approved' | 'superseded' | 'withdrawn';
@@ -33,6 +34,8 @@ export interface ProposalFrame {
   date?: string | null;
   /** revisions before this one, the first of them first */
   history?: readonly PastRevision[];
+  /** signatures and acceptances of the paper of an approval */
+  review?: PrintedReview;
   paper?: PaperSize;
   /** the site's logo, a PNG or JPEG file */
   logo?: Uint8Array | null;
