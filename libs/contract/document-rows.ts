@@ -37,8 +37,9 @@ function objectRowsInto(rows: TableCell[][], path: string, object: object): void
   const entries = Object.entries(object).filter(([, member]) => member !== undefined);
   if (entries.length === 0) rows.push([path, 'empty object', null]);
   for (const [key, member] of entries) {
-    if (!KEY.test(key)) throw new Error(`no path for the key ${JSON.stringify(key)}`);
-    rowsInto(rows, path === '' ? key : `${path}.${key}`, member);
+    // a key that is no plain name is told and not read back: no site file has one
+    const step = KEY.test(key) ? `${path === '' ? '' : '.'}${key}` : `[${JSON.stringify(key)}]`;
+    rowsInto(rows, `${path}${step}`, member);
   }
 }
 

@@ -40,7 +40,10 @@ export function planTables(result: Result | EstimateResult): ResultTable[] {
     ['inrush', inrush.stages],
     ['ageing', ageing.cases],
     ['levels', network.levels],
-    ['orders', network.levels.flatMap(({ orders, ...level }) => orders.map((order) => ({ ...placeOf(level), ...order })))],
+    [
+      'orders',
+      network.levels.flatMap(({ orders, ...level }) => orders.map((order) => ({ ...placeOf(level), ...order }))),
+    ],
     ...monthLists(result),
     ['findings', 'findings' in result ? (result.findings as object[]) : []],
     ['assumptions', result.assumptions],
@@ -49,7 +52,11 @@ export function planTables(result: Result | EstimateResult): ResultTable[] {
   return [summaryTable(result), ...tables, calculationTable(result)];
 }
 
-function placeOf({ bus, levelKvar, case: at }: Result['network']['levels'][number] | Omit<Result['network']['levels'][number], 'orders'>) {
+function placeOf({
+  bus,
+  levelKvar,
+  case: at,
+}: Result['network']['levels'][number] | Omit<Result['network']['levels'][number], 'orders'>) {
   return { bus, levelKvar, case: at };
 }
 

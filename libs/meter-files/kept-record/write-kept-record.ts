@@ -1,5 +1,5 @@
 import { csvLine } from '#libs/contract/csv-text.js';
-import type { LoadRecord } from '#libs/engine/index.js';
+import { InputProblem, type LoadRecord } from '#libs/engine/index.js';
 import { writeWorkbook } from '../xlsx/write-workbook.js';
 import { KEPT_HEAD, keptRows, presentColumns } from './kept-record.js';
 
@@ -9,18 +9,35 @@ export type KeptForm = (typeof KEPT_FORMS)[number];
 
 /** Rows of text are gathered into pieces of about this many characters. */
 const PIECE = 65_536;
-/** A sheet holds no more rows (ISO/IEC 29500-1). */
-export const MOST_SHEET_ROWS = 1_048_576;
+/** A sheet holds 1 048 576 rows; some stand before the intervals. */
+const MOST_SHEET_ROWS = 1_000_000;
 
 /**
  * A record to be kept outside and taken back without losing a bit: its columns, repairs, repeats and notes.
  * @param record the record
  * @param form JSON, comma-separated text or a workbook of one sheet
  * @returns the file in pieces
+ * @throws InputProblem where a sheet can't hold so many rows
  */
 export function* keptRecordChunks(record: LoadRecord, form: KeptForm): Generator<Uint8Array> {
+  if (form === 'xlsx' && record.beginS.length > MOST_SHEET_ROWS) {
+    const found = `${record.beginS.length}`;
+    throw new InputProblem([
+      { code: 'too-large', expected: `at most ${MOST_SHEET_ROWS} intervals in a workbook`, found },
+    ]);
+  }
   if (form === 'xlsx') yield writeWorkbook([{ name: 'record', rows: keptRows(record) }]);
   else yield* pieces(form === 'csv' ? csvLines(record) : jsonParts(record));
+}
+
+/**
+ * The same as one file.
+ * @param record the record
+ * @param form of the file
+ * @throws InputProblem where a sheet can't hold so many rows
+ */
+export function keptBytes(record: LoadRecord, form: KeptForm): Buffer {
+  return Buffer.concat([...keptRecordChunks(record, form)]);
 }
 
 function* csvLines(record: LoadRecord): Generator<string> {
