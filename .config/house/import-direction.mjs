@@ -22,7 +22,9 @@ export const STAGES = [
 ];
 
 const DOOR = 'libs/engine/index.ts';
-const LIBS = ['engine', 'contract', 'meter-files', 'present', 'proposal', 'store', 'jobs'].map((lib) => `libs/${lib}`);
+const LIBS = ['engine', 'contract', 'meter-files', 'present', 'review', 'proposal', 'store', 'jobs'].map(
+  (lib) => `libs/${lib}`,
+);
 
 /** The part of libs/jobs that needs no database: worker threads over the engine alone. */
 const POOL = /^libs\/jobs\/pool([./-]|$)/;
@@ -32,9 +34,10 @@ export const MAY_IMPORT = {
   'libs/engine': [],
   'libs/contract': ['libs/engine'],
   'libs/meter-files': ['libs/engine', 'libs/contract'],
-  'libs/present': ['libs/engine'],
+  'libs/present': ['libs/engine', 'libs/review'],
+  'libs/review': ['libs/engine', 'libs/contract'],
   'libs/proposal': ['libs/engine', 'libs/present'],
-  'libs/store': ['libs/engine', 'libs/contract', 'migrations'],
+  'libs/store': ['libs/engine', 'libs/contract', 'libs/review', 'migrations'],
   'libs/jobs': ['libs/engine', 'libs/store'],
   migrations: ['libs/store'],
   'apps/server': [...LIBS, 'migrations'],

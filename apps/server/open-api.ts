@@ -40,6 +40,7 @@ async function describeRoutes(app: INestApplication): Promise<OpenAPIObject> {
     const { parameters = [], responses, ...part } = OPEN_API_PARTS[`${method.toLowerCase()} ${template}`] ?? {};
     Object.assign(operation, part, {
       summary: declared?.does ?? '',
+      ...(declared?.role ? { description: `Needs the role ${declared.role}, or one that may do more.` } : {}),
       parameters: [...(operation.parameters ?? []), ...parameters],
       responses: { ...(responses ?? operation.responses), default: REFUSED },
     });

@@ -1,8 +1,8 @@
 import type { FastifyInstance } from 'fastify';
 import { RefusedRequest } from './refused-request.js';
 
-const UPLOADS = /\/records(\/:recordId\/revisions)?$/;
-const FILE_TYPES = ['text/csv', 'application/octet-stream'];
+const UPLOADS = /\/records(\/:recordId\/revisions)?$|^\/api\/verify$/;
+const FILE_TYPES = ['text/csv', 'application/octet-stream', 'application/pdf'];
 
 /**
  * Reads bodies as JSON, on the routes that take files as files, and refuses every other kind.

@@ -18,8 +18,11 @@ import { KeptMapsController } from './kept-maps/kept-maps-controller.js';
 import { refuseForeign } from './local-requests.js';
 import { OpenApi } from './open-api.js';
 import { OpenApiController } from './open-api-controller.js';
+import type { Confirm } from './people/confirm.js';
 import { PageController } from './page/page-controller.js';
 import { PageFiles } from './page/page-files.js';
+import { LOCAL_ACTOR } from './people/actor.js';
+import { Admission } from './people/admission.js';
 import { planRunner } from './planning/plan-runner.js';
 import { Planning } from './planning/planning.js';
 import { PlanningController } from './planning/planning-controller.js';
@@ -30,10 +33,15 @@ import { RecordsController } from './records/records-controller.js';
 import { Spool } from './records/spool.js';
 import { UploadIntake } from './records/upload-intake.js';
 import { refuseOtherBodies } from './request-bodies.js';
+import { DifferencesController } from './review/differences-controller.js';
+import { ReviewController } from './review/review-controller.js';
+import { ReviewPageController } from './review/review-page-controller.js';
+import { Reviews } from './review/reviews.js';
+import { VerifyController } from './review/verify-controller.js';
 import { ServerLog } from './server-log.js';
 import type { Settings } from './settings.js';
 import { SitesController } from './sites/sites-controller.js';
-import { JOBS } from './tokens.js';
+import { CONFIRM, JOBS } from './tokens.js';
 import { UnknownController } from './unknown-controller.js';
 
 /** What may stand in for the program's own, in tests. */
@@ -52,12 +60,19 @@ const CONTROLLERS: ServerParts['controllers'] = [
   SitesController,
   RecordsController,
   PlanningController,
+  ReviewController,
+  ReviewPageController,
+  DifferencesController,
+  VerifyController,
   KeptMapsController,
   JobsController,
   DemoController,
   OpenApiController,
   UnknownController,
 ];
+
+/** As long as nobody has a password, being at this machine is what confirms an approval. */
+const withoutAccounts: Confirm = async () => undefined;
 
 @Module({})
 class ServerModule {}
@@ -105,6 +120,8 @@ export async function createServer(
       { provide: RecordImport, useValue: importer },
       UploadIntake,
       Planning,
+      Reviews,
+      { provide: CONFIRM, useValue: withoutAccounts },
       {
         provide: 'closing',
         useValue: {
@@ -145,16 +162,19 @@ async function serve(
   });
   const app = await NestFactory.create<NestFastifyApplication>(module, adapter, { logger: log, bodyParser: false });
   app.useGlobalFilters(new ProblemFilter(log));
-  await harden(fastify, { settings, log });
+  const admission = new Admission(async () => LOCAL_ACTOR);
+  await harden(fastify, { settings, log, admission });
   await app.init();
-  refuseUndeclared(routesOf(app), registered);
+  const routes = routesOf(app);
+  refuseUndeclared(routes, registered);
+  admission.learn(routes);
   app.get(OpenApi).describe(app);
   return app;
 }
 
 async function harden(
   fastify: FastifyInstance,
-  { settings, log }: { settings: Settings; log: ServerLog },
+  { settings, log, admission }: { settings: Settings; log: ServerLog; admission: Admission },
 ): Promise<void> {
   // Served by plain http on this machine: asking a browser for https would leave the page blank.
   await fastify.register(helmet, {
@@ -165,7 +185,10 @@ async function harden(
     limits: { fileSize: settings.uploadBytes, files: 1, fields: 10, fieldSize: 100_000, parts: 11 },
   });
   refuseOtherBodies(fastify);
-  fastify.addHook('onRequest', async (request) => refuseForeign(request));
+  fastify.addHook('onRequest', async (request) => {
+    refuseForeign(request);
+    await admission.admit(request);
+  });
   fastify.addHook('onResponse', async (request, reply) => {
     const route = request.routeOptions.url ?? 'none';
     log.answered({ method: request.method, route, status: reply.statusCode, ms: Math.round(reply.elapsedTime) });

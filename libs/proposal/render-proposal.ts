@@ -1,5 +1,6 @@
 import { type EstimateOutcome, isEstimate, monthSpan, type Outcome } from '#libs/engine/index.js';
 import { plainName } from '#libs/present/plain-name.js';
+import { needIssuable } from './missing-parts.js';
 import { drawHeaders, setHeader } from './page-header.js';
 import { Paper, sheet } from './paper.js';
 import type { ProposalFrame } from './proposal-frame.js';
@@ -20,6 +21,12 @@ import { drawNetwork } from './section-network.js';
 import { drawSensitivity } from './section-sensitivity.js';
 import { drawSignatures } from './section-signatures.js';
 import { drawSiteActions } from './section-site-actions.js';
+import { drawHistory } from './section-history.js';
+import { drawMaintenance } from './section-maintenance.js';
+import { drawMaterials } from './section-materials.js';
+import { drawOperatorPage } from './section-operator.js';
+import { drawSettings } from './section-settings.js';
+import { drawVerification } from './section-verification.js';
 import { drawStages } from './section-stages.js';
 
 export type { ProposalFrame } from './proposal-frame.js';
@@ -30,8 +37,10 @@ export type { ProposalFrame } from './proposal-frame.js';
  * @param outcome the plan or judgement, its result already put in words
  * @param frame number, revision, state, hash and sheet
  * @returns the file's bytes
+ * @throws InputProblem where it is to be more than a draft and a part is empty or a finding blocks issue
  */
 export async function renderProposal(outcome: Outcome | EstimateOutcome, frame: ProposalFrame): Promise<Uint8Array> {
+  needIssuable(outcome, frame);
   const doc = await openDocument(outcome, frame);
   const chunks: Buffer[] = [];
   const finished = new Promise<void>((resolve, reject) => {
@@ -62,6 +71,12 @@ export async function renderProposal(outcome: Outcome | EstimateOutcome, frame: 
   drawHandCheck(paper, outcome);
   drawSiteActions(paper, outcome);
   drawCautions(paper, outcome);
+  drawSettings(paper, outcome);
+  drawOperatorPage(paper, outcome);
+  drawMaintenance(paper, outcome);
+  drawMaterials(paper, outcome);
+  drawHistory(paper, outcome, frame);
+  drawVerification(paper, outcome, frame);
   drawHeaders(paper, header);
   paper.end();
   doc.end();

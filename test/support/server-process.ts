@@ -43,9 +43,10 @@ export async function startProcess(
   const end: ServerProcess['end'] = async (signal) => {
     const ended = once(child, 'exit');
     child.kill(signal);
-    const [code] = await ended;
+    const [code, by] = (await ended) as [number | null, NodeJS.Signals | null];
+    if (by !== null && by !== signal) throw new Error(`the server was ended by ${by}, not by ${signal}: ${said}`);
     if (printed !== '') throw new Error(`the server wrote to stdout: ${printed}`);
-    return code as number | null;
+    return code;
   };
   return { ...clientOf(base), end, said: () => said };
 }

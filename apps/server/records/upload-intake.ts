@@ -80,6 +80,6 @@ export class UploadIntake {
     reply.status(record.id === previous?.id ? 200 : 201);
     reply.header('location', `/api/sites/${record.siteId}/records/${record.id}`);
     const shown = showRecord(record, await readSiteWithMathjs(site.document));
-    return { ...shown, offered: await this.importer.offeredFor(record.fileHeader) };
+    return { ...shown, offered: await this.importer.offeredFor(site.id, record.fileHeader) };
   }
 }
