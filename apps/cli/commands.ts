@@ -2,6 +2,8 @@ import type { Command } from './command.js';
 
 const METER_OPTIONS = { format: 'FORMAT', map: 'FILE', 'time-zone': 'ZONE' };
 
+const SHEET_OPTIONS = { paper: 'SIZE', logo: 'FILE' };
+
 const METER_LISTS = { extend: 'METER-FILE' };
 
 const METER_DETAILS = `  --extend FILE      a further meter file that extends or corrects the record, read by the same options; may stand
@@ -14,6 +16,8 @@ const METER_DETAILS = `  --extend FILE      a further meter file that extends or
 
 const PLAN_DETAILS = `  --load METER-FILE  the meter's record; without it the site's estimate (bills, equipment list)
   --pdf OUT          write the proposal there
+  --paper SIZE       sheet of the proposal: A4 (where not given) or Letter
+  --logo FILE        the site's logo for the proposal, PNG or JPEG, at most 262144 bytes and 2000000 pixels
 ${METER_DETAILS}`;
 
 /** Every command; a command's own file is loaded when it is called. */
@@ -31,7 +35,7 @@ export const COMMANDS: Record<string, Command> = {
   },
   plan: {
     operand: 'SITE',
-    values: { load: 'METER-FILE', pdf: 'OUT', ...METER_OPTIONS },
+    values: { load: 'METER-FILE', pdf: 'OUT', ...SHEET_OPTIONS, ...METER_OPTIONS },
     lists: METER_LISTS,
     flags: ['json'],
     does: 'design a bank for a site and judge it',
@@ -40,7 +44,7 @@ export const COMMANDS: Record<string, Command> = {
   },
   assess: {
     operand: 'SITE',
-    values: { load: 'METER-FILE', pdf: 'OUT', ...METER_OPTIONS },
+    values: { load: 'METER-FILE', pdf: 'OUT', ...SHEET_OPTIONS, ...METER_OPTIONS },
     lists: METER_LISTS,
     flags: ['json'],
     does: "judge the site's own bank",

@@ -48,6 +48,25 @@ export async function readJson(path: string): Promise<unknown> {
   return parseJson(Buffer.concat(chunks));
 }
 
+/**
+ * Reads a small file whole.
+ * @param path what was typed
+ * @param mostBytes beyond these nothing is read [bytes]
+ * @returns its bytes; one more than the most where there are more
+ * @throws InputProblem where it can't be opened
+ */
+export async function readSmall(path: string, mostBytes: number): Promise<Uint8Array> {
+  const { bytes } = await openInput(path);
+  const chunks: Uint8Array[] = [];
+  let size = 0;
+  for await (const chunk of bytes) {
+    size += chunk.length;
+    chunks.push(new Uint8Array(chunk));
+    if (size > mostBytes) break;
+  }
+  return Buffer.concat(chunks).subarray(0, mostBytes + 1);
+}
+
 function parseJson(bytes: Uint8Array): unknown {
   let text: string;
   try {

@@ -24,6 +24,7 @@ import { usage } from './command-line.js';
 import { readJson } from './input-file.js';
 import { readMeterRecord } from './meter-record.js';
 import { say, write, writeJson } from './output.js';
+import { type PaperSheet, paperSheet } from './paper-sheet.js';
 import { proposalTarget } from './proposal-target.js';
 import { inFile } from './refused-file.js';
 
@@ -38,6 +39,7 @@ interface Told {
   outcome: Outcome | EstimateOutcome;
   report: string;
   contentHash: string;
+  recordHash: string | null;
 }
 
 /**
@@ -51,6 +53,7 @@ interface Told {
 export async function judgeSite(line: CommandLine, kind: Outcome['kind'], judges: Judges): Promise<number> {
   const load = line.values.get('load');
   const pdf = line.values.get('pdf');
+  const sheet = await paperSheet(line);
   const target = pdf === undefined ? null : await proposalTarget(pdf);
   const given = await inFile(line.operand, async () => readSiteWithMathjs(await readJson(line.operand)));
   const site = frozenSite(given, Date.now() / 1000);
@@ -65,7 +68,7 @@ export async function judgeSite(line: CommandLine, kind: Outcome['kind'], judges
       : byRecord(site, kind, judges, (await readMeterRecord(line, load, site.timeZone)).record);
   await nextTurn(); // an interruption that came meanwhile is heard here
   if (target !== null) {
-    await target.write(await proposalOf(told));
+    await target.write(await proposalOf(told, sheet));
     say(`proposal written to ${pdf}`);
   }
   const { result } = told.outcome;
@@ -78,8 +81,9 @@ function byRecord(site: Site, kind: Outcome['kind'], judges: Judges, record: Loa
   const zone = zoneTableOf(site.timeZone, record);
   const computed = withRobustness(judges.record(site, record, zone));
   const outcome: Outcome = { ...computed, result: putInWords(computed.result) };
-  const contentHash = contentHashOf({ kind, site, recordHash: sha256(recordBytes(record)), zone });
-  return { outcome, report: resultReport(outcome), contentHash };
+  const recordHash = sha256(recordBytes(record));
+  const contentHash = contentHashOf({ kind, site, recordHash, zone });
+  return { outcome, report: resultReport(outcome), contentHash, recordHash };
 }
 
 function byEstimate(site: Site, kind: Outcome['kind'], judges: Judges): Told {
@@ -90,6 +94,7 @@ function byEstimate(site: Site, kind: Outcome['kind'], judges: Judges): Told {
     outcome,
     report: estimateReport(outcome),
     contentHash: contentHashOf({ kind, site, recordHash: null, zone }),
+    recordHash: null,
   };
 }
 
@@ -110,7 +115,7 @@ function needBank(site: Site): void {
 }
 
 /** The drawing of papers is loaded only where one is wanted. */
-async function proposalOf({ outcome, contentHash }: Told): Promise<Uint8Array> {
+async function proposalOf({ outcome, contentHash, recordHash }: Told, sheet: PaperSheet): Promise<Uint8Array> {
   const { renderProposal } = await import('#libs/proposal/render-proposal.js');
   return renderProposal(outcome, {
     number: contentHash.slice(0, 8),
@@ -118,7 +123,10 @@ async function proposalOf({ outcome, contentHash }: Told): Promise<Uint8Array> {
     state: 'draft, not reviewed',
     preparedBy: null,
     contentHash,
+    recordHash,
     engineVersion: ENGINE_VERSION,
+    date: outcome.site.asOf,
+    ...sheet,
   });
 }
 

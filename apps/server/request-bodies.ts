@@ -2,6 +2,9 @@ import type { FastifyInstance } from 'fastify';
 import { RefusedRequest } from './refused-request.js';
 
 const UPLOADS = /\/records(\/:recordId\/revisions)?$|^\/api\/verify$/;
+/** Pages that work without scripts send forms; nothing else takes them. */
+const FORMS = /^\/(sign-in|sign-out|people|account)(\/|$)/;
+const FORM_TYPE = 'application/x-www-form-urlencoded';
 const FILE_TYPES = ['text/csv', 'application/octet-stream', 'application/pdf'];
 
 /**
@@ -19,6 +22,10 @@ export function refuseOtherBodies(fastify: FastifyInstance): void {
   });
   fastify.addContentTypeParser(FILE_TYPES, (request, payload, done) => {
     if (UPLOADS.test(request.routeOptions.url ?? '')) done(null, payload);
+    else done(otherType('application/json'));
+  });
+  fastify.addContentTypeParser(FORM_TYPE, { parseAs: 'string', bodyLimit: 10_000 }, (request, text, done) => {
+    if (FORMS.test(request.routeOptions.url ?? '')) done(null, Object.fromEntries(new URLSearchParams(String(text))));
     else done(otherType('application/json'));
   });
   fastify.addHook('preValidation', async (request) => {

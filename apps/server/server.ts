@@ -7,6 +7,7 @@ import type { FastifyInstance, FastifyReply } from 'fastify';
 import { InProcessJobs } from '#libs/jobs/in-process-jobs.js';
 import { WorkerPool } from '#libs/jobs/pool/worker-pool.js';
 import { openStore } from '#libs/store/open-store.js';
+import { hasAdministrator } from '#libs/store/people.js';
 import { Store } from '#libs/store/store.js';
 import { type Registered, refuseUndeclared, routesOf } from './declared-routes.js';
 import { DemoController } from './demo/demo-controller.js';
@@ -15,14 +16,21 @@ import { HealthController } from './health/health-controller.js';
 import { HomeController } from './home/home-controller.js';
 import { JobsController } from './jobs/jobs-controller.js';
 import { KeptMapsController } from './kept-maps/kept-maps-controller.js';
-import { refuseForeign } from './local-requests.js';
+import { foreignCheck } from './local-requests.js';
 import { OpenApi } from './open-api.js';
 import { OpenApiController } from './open-api-controller.js';
 import type { Confirm } from './people/confirm.js';
 import { PageController } from './page/page-controller.js';
 import { PageFiles } from './page/page-files.js';
-import { LOCAL_ACTOR } from './people/actor.js';
+import { Accounts, type Reach } from './people/accounts.js';
 import { Admission } from './people/admission.js';
+import { Keys } from './people/keys.js';
+import { KeysController } from './people/keys-controller.js';
+import { type HashCost, PRESENT_COST } from './people/password-hash.js';
+import { People } from './people/people.js';
+import { PeopleController } from './people/people-controller.js';
+import { SessionController } from './people/session-controller.js';
+import { SignInController } from './people/sign-in-controller.js';
 import { planRunner } from './planning/plan-runner.js';
 import { Planning } from './planning/planning.js';
 import { PlanningController } from './planning/planning-controller.js';
@@ -39,7 +47,7 @@ import { ReviewPageController } from './review/review-page-controller.js';
 import { Reviews } from './review/reviews.js';
 import { VerifyController } from './review/verify-controller.js';
 import { ServerLog } from './server-log.js';
-import type { Settings } from './settings.js';
+import { isLocal, type Settings } from './settings.js';
 import { SitesController } from './sites/sites-controller.js';
 import { CONFIRM, JOBS } from './tokens.js';
 import { UnknownController } from './unknown-controller.js';
@@ -51,6 +59,8 @@ export interface ServerParts {
   /** folder of the built page */
   pageFolder: URL;
   controllers: NonNullable<DynamicModule['controllers']>;
+  /** what guessing a password costs */
+  hashCost: HashCost;
 }
 
 const CONTROLLERS: ServerParts['controllers'] = [
@@ -66,13 +76,14 @@ const CONTROLLERS: ServerParts['controllers'] = [
   VerifyController,
   KeptMapsController,
   JobsController,
+  SessionController,
+  PeopleController,
+  KeysController,
+  SignInController,
   DemoController,
   OpenApiController,
   UnknownController,
 ];
-
-/** As long as nobody has a password, being at this machine is what confirms an approval. */
-const withoutAccounts: Confirm = async () => undefined;
 
 @Module({})
 class ServerModule {}
@@ -89,10 +100,12 @@ export async function createServer(
     workerFile = new URL('./planning/planning-worker.js', import.meta.url),
     pageFolder = new URL('../web/', import.meta.url),
     controllers = CONTROLLERS,
+    hashCost = PRESENT_COST,
   }: Partial<ServerParts> = {},
 ): Promise<NestFastifyApplication> {
   const log = new ServerLog(settings.logLevel);
   const store = await openStore(settings.dbUrl);
+  await refuseUnguarded(settings, store);
   const spool = new Spool(settings.spoolDir, settings.uploadBytes);
   await spool.prepare(await wantedPlaces(store));
   const pool = new WorkerPool(workerFile, (error) => log.fault(error));
@@ -106,12 +119,14 @@ export async function createServer(
     describe: describeError,
     onFault: (error) => log.fault(error),
   });
+  const accounts = new Accounts(store, reachOf(settings), hashCost);
   let demo: Promise<void> = Promise.resolve();
   const module: DynamicModule = {
     module: ServerModule,
     controllers,
     providers: [
       { provide: Store, useValue: store },
+      { provide: Accounts, useValue: accounts },
       { provide: Spool, useValue: spool },
       { provide: WorkerPool, useValue: pool },
       { provide: JOBS, useValue: jobs },
@@ -121,7 +136,9 @@ export async function createServer(
       UploadIntake,
       Planning,
       Reviews,
-      { provide: CONFIRM, useValue: withoutAccounts },
+      { provide: CONFIRM, useValue: confirmBy(accounts) },
+      People,
+      Keys,
       {
         provide: 'closing',
         useValue: {
@@ -140,6 +157,23 @@ export async function createServer(
     demo = loadDemo({ store, spool, importer, planning: app.get(Planning) }).catch((error) => log.fault(error));
   }
   return app;
+}
+
+/**
+ * Beyond this machine everything would lie open to whoever finds the server.
+ * @throws Error where nobody could sign in
+ */
+async function refuseUnguarded(settings: Settings, store: Store): Promise<void> {
+  if (isLocal(settings) || (await store.read(hasAdministrator))) return;
+  await store.close();
+  throw new Error(
+    `HOST ${settings.host}${settings.origin === null ? '' : `, ORIGIN ${settings.origin}`}: others reach this server, ` +
+      'and nobody has an account; add an administrator first (npm run -s add-administrator)',
+  );
+}
+
+function reachOf(settings: Settings): Reach {
+  return { isLocal: isLocal(settings), isSecure: settings.origin?.startsWith('https:') ?? false };
 }
 
 async function serve(
@@ -162,7 +196,8 @@ async function serve(
   });
   const app = await NestFactory.create<NestFastifyApplication>(module, adapter, { logger: log, bodyParser: false });
   app.useGlobalFilters(new ProblemFilter(log));
-  const admission = new Admission(async () => LOCAL_ACTOR);
+  const accounts = app.get(Accounts);
+  const admission = new Admission((request) => accounts.recognise(request));
   await harden(fastify, { settings, log, admission });
   await app.init();
   const routes = routesOf(app);
@@ -185,12 +220,19 @@ async function harden(
     limits: { fileSize: settings.uploadBytes, files: 1, fields: 10, fieldSize: 100_000, parts: 11 },
   });
   refuseOtherBodies(fastify);
-  fastify.addHook('onRequest', async (request) => {
+  const refuseForeign = foreignCheck(settings);
+  fastify.addHook('onRequest', async (request, reply) => {
     refuseForeign(request);
-    await admission.admit(request);
+    await admission.admit(request, reply);
+    return reply.sent ? reply : undefined;
   });
   fastify.addHook('onResponse', async (request, reply) => {
     const route = request.routeOptions.url ?? 'none';
     log.answered({ method: request.method, route, status: reply.statusCode, ms: Math.round(reply.elapsedTime) });
   });
+}
+
+/** As long as nobody has a password, being at this machine is what confirms an approval. */
+function confirmBy(accounts: Accounts): Confirm {
+  return (actor, password) => accounts.confirm(actor, password ?? '');
 }

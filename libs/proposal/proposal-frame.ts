@@ -37,4 +37,6 @@ export interface ProposalFrame {
   /** signatures and acceptances of the paper of an approval */
   review?: PrintedReview;
   paper?: PaperSize;
+  /** the site's logo, a PNG or JPEG file */
+  logo?: Uint8Array | null;
 }

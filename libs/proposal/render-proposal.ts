@@ -4,6 +4,7 @@ import { needIssuable } from './missing-parts.js';
 import { drawHeaders, setHeader } from './page-header.js';
 import { Paper, sheet } from './paper.js';
 import type { ProposalFrame } from './proposal-frame.js';
+import { readLogo } from './read-logo.js';
 import { drawAgeing } from './section-ageing.js';
 import { drawAssumptions, drawBasis } from './section-basis.js';
 import { drawCautions } from './section-cautions.js';
@@ -37,10 +38,12 @@ export type { ProposalFrame } from './proposal-frame.js';
  * @param outcome the plan or judgement, its result already put in words
  * @param frame number, revision, state, hash and sheet
  * @returns the file's bytes
- * @throws InputProblem where it is to be more than a draft and a part is empty or a finding blocks issue
+ * @throws InputProblem where the logo can't be used, or the paper is to be more than a draft and a part is empty or a finding
+ * blocks issue
  */
 export async function renderProposal(outcome: Outcome | EstimateOutcome, frame: ProposalFrame): Promise<Uint8Array> {
   needIssuable(outcome, frame);
+  const logo = frame.logo == null ? null : readLogo(frame.logo);
   const doc = await openDocument(outcome, frame);
   const chunks: Buffer[] = [];
   const finished = new Promise<void>((resolve, reject) => {
@@ -51,7 +54,7 @@ export async function renderProposal(outcome: Outcome | EstimateOutcome, frame: 
   const paper = new Paper(doc);
   const header = setHeader(paper, frame, outcome);
   paper.begin(header.contentTop);
-  drawDecision(paper, outcome);
+  drawDecision(paper, outcome, logo);
   drawSignatures(paper, frame);
   drawFindings(paper, outcome);
   drawBasis(paper, outcome);

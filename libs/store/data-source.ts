@@ -6,6 +6,7 @@ import {
   type ReplicationMode,
 } from 'typeorm';
 import { migrations } from '#migrations/migrations.js';
+import { ApiKey } from './api-key.js';
 import { AuditEntry } from './audit-entry.js';
 import { type Dialect, speakDialect } from './columns.js';
 import { IssuedPaper } from './issued-paper.js';
@@ -13,6 +14,8 @@ import { Job } from './job.js';
 import { KeptMap } from './kept-map.js';
 import { Milestone } from './milestone.js';
 import { Organisation } from './organisation.js';
+import { Person } from './person.js';
+import { PersonSession } from './person-session.js';
 import { ProposalFile } from './proposal-file.js';
 import { RecordColumn } from './record-column.js';
 import { ReviewStanding } from './review-standing.js';
@@ -21,18 +24,9 @@ import { StoredRecord } from './stored-record.js';
 import { StoredSite } from './stored-site.js';
 
 const ENTITIES = [
-  Organisation,
-  StoredSite,
-  StoredRecord,
-  RecordColumn,
-  Revision,
-  ProposalFile,
-  Job,
-  Milestone,
-  KeptMap,
-  AuditEntry,
-  ReviewStanding,
-  IssuedPaper,
+  ...[Organisation, Person, PersonSession, ApiKey],
+  ...[StoredSite, StoredRecord, RecordColumn, Revision, ProposalFile, Job, Milestone, KeptMap],
+  ...[AuditEntry, ReviewStanding, IssuedPaper],
 ];
 const BUSY_MS = 5000;
 

@@ -1,6 +1,7 @@
 import { type EntityManager, Not } from 'typeorm';
 import { InputProblem } from '#libs/engine/index.js';
 import { KeptMap } from './kept-map.js';
+import { StaleVersion } from './stale-version.js';
 
 /** What a client says of kept answers. */
 export type KeptMapContent = Pick<KeptMap, 'organisationId' | 'name' | 'map' | 'header'>;
@@ -70,7 +71,7 @@ export async function deleteKeptMap(manager: EntityManager, id: string, version:
 async function changedMeanwhile(manager: EntityManager, { id, version }: Pick<KeptMap, 'id' | 'version'>) {
   const current = await manager.findOneBy(KeptMap, { id });
   if (current === null) return noKeptMap(id);
-  return new InputProblem([{ code: 'stale', expected: `version ${current.version}`, found: `version ${version}` }]);
+  return new StaleVersion(version, current.version);
 }
 
 async function refuseTakenName(

@@ -2,6 +2,7 @@ import type { EntityManager } from 'typeorm';
 import { InputProblem } from '#libs/engine/index.js';
 import { IssuedPaper } from './issued-paper.js';
 import { Revision } from './revision.js';
+import { StaleVersion } from './stale-version.js';
 import { StoredSite } from './stored-site.js';
 
 /** A site that is not there. */
@@ -70,7 +71,7 @@ export async function replaceSite(
   if (affected === 1) return seen + 1;
   const current = await manager.findOneBy(StoredSite, { id: site.id });
   if (current === null) throw noSite(site.id);
-  throw new InputProblem([{ code: 'stale', expected: `version ${current.version}`, found: `version ${seen}` }]);
+  throw new StaleVersion(seen, current.version);
 }
 
 /**
@@ -83,9 +84,7 @@ export async function replaceSite(
 export async function deleteSite(manager: EntityManager, id: string, seen: number | null): Promise<void> {
   const current = await manager.findOneBy(StoredSite, { id });
   if (current === null) throw noSite(id);
-  if (seen !== null && current.version !== seen) {
-    throw new InputProblem([{ code: 'stale', expected: `version ${current.version}`, found: `version ${seen}` }]);
-  }
+  if (seen !== null && current.version !== seen) throw new StaleVersion(seen, current.version);
   await refuseIssued(manager, id);
   await manager.delete(StoredSite, { id });
 }

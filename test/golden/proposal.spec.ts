@@ -3,6 +3,7 @@ import { createHash } from 'node:crypto';
 import { beforeAll, describe, expect, it } from 'vitest';
 import type { Outcome } from '#libs/engine/index.js';
 import { renderProposal } from '#libs/proposal/render-proposal.js';
+import { pngFile } from '../support/made-picture.js';
 import { MADE_BANK, MADE_PLAIN_BANK, madeFrame, madeOutcome } from '../support/outcome.js';
 import { readPdf, squeezed, textOf, wordsOf } from '../support/pdf-text.js';
 
@@ -29,6 +30,7 @@ const SECTIONS = [
   'Revision history',
   'Verification',
 ];
+
 const NUMBERS = SECTIONS.map((_, at) => at + 1);
 
 const SMALL = { days: 40 };
@@ -148,8 +150,31 @@ describe('the file', () => {
     expect(Buffer.from(bytes).toString('latin1')).toContain('/Lang (en)');
   });
 
+  it('carries the site’s logo as a picture of the same bytes every time', async () => {
+    const logo = pngFile({
+      width: 4,
+      height: 2,
+      bits: 8,
+      colour: 2,
+      samples: Array.from({ length: 24 }, (_, n) => n * 9),
+    });
+    const [once, again] = [
+      await renderProposal(judged, madeFrame({ logo })),
+      await renderProposal(judged, madeFrame({ logo })),
+    ];
+    expect(Buffer.from(once).equals(Buffer.from(again))).toBe(true);
+    const pictures = (data: Uint8Array) =>
+      Buffer.from(data)
+        .toString('latin1')
+        .match(/\/Subtype \/Image\n/g)?.length ?? 0;
+    expect(pictures(once)).toBe(1);
+    expect(pictures(bytes)).toBe(0);
+    expect(Buffer.from(once).toString('latin1')).toContain('/Alt (Logo of Merrowick Extrusion, hall 2)');
+  });
+
   it.each(['A4', 'Letter'] as const)('keeps every word inside the margins of %s', async (paper) => {
-    const sheet = await renderProposal(judged, madeFrame({ paper }));
+    const logo = pngFile({ width: 30, height: 10, bits: 8, colour: 0, samples: Array.from({ length: 300 }, () => 90) });
+    const sheet = await renderProposal(judged, madeFrame({ paper, logo }));
     const size = { A4: [595.28, 841.89], Letter: [612, 792] }[paper];
     for (const { width, height, words } of wordsOf(sheet)) {
       expect([width, height]).toEqual(size);

@@ -6,7 +6,7 @@ import { clientOf, type TestServer } from './test-server.js';
 const MAIN = join(import.meta.dirname, '../../dist/apps/server/main.js');
 
 /** The built server as a process of its own, to be ended in any way. */
-export interface ServerProcess extends Omit<TestServer, 'close'> {
+export interface ServerProcess extends Omit<TestServer, 'close' | 'routes'> {
   /** sends a signal and waits for the end; gives the exit code, null where a signal ended it */
   end: (signal: 'SIGKILL' | 'SIGTERM' | 'SIGINT') => Promise<number | null>;
   /** what it wrote to stderr so far */

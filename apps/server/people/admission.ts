@@ -1,4 +1,4 @@
-import type { FastifyRequest } from 'fastify';
+import type { FastifyReply, FastifyRequest } from 'fastify';
 import type { Route } from '../declared-routes.js';
 import type { Declared } from '../public.js';
 import { RefusedRequest } from '../refused-request.js';
@@ -27,9 +27,10 @@ export class Admission {
 
   /**
    * @param request whose route is known, and whose body is not read yet
+   * @param reply leads a visitor of a page to the page to sign in on
    * @throws RefusedRequest 401 where the route needs somebody, 403 where it needs another role
    */
-  async admit(request: FastifyRequest): Promise<void> {
+  async admit(request: FastifyRequest, reply: FastifyReply): Promise<void> {
     const { url } = request.routeOptions;
     // Nothing is served there, and the answer says so.
     if (url === undefined) return;
@@ -39,9 +40,15 @@ export class Admission {
     const actor = await this.#recognise(request);
     if (actor !== null) nameActor(request, actor);
     if (declared.role === null) return;
+    if (actor === null && isVisit(request)) return void (await reply.redirect('/sign-in', 303));
     if (actor === null) throw unknownPerson();
     if (!covers(actor.role, declared.role)) throw otherRole(declared.role, actor.role);
   }
+}
+
+/** Whether a person looks at a page, rather than a program at the API. */
+function isVisit({ method, url, headers }: FastifyRequest): boolean {
+  return method === 'GET' && !url.startsWith('/api/') && /\btext\/html\b/.test(headers.accept ?? '');
 }
 
 function unknownPerson(): RefusedRequest {

@@ -14,4 +14,8 @@ export interface FrozenPlan {
   reason: string | null;
   /** who asked for it, and so cannot approve it alone; absent in jobs that were queued before anybody was named */
   preparedBy?: Person;
+  /** sheet and logo of the proposal; absent where none was asked for */
+  paper?: 'A4' | 'Letter';
+  /** base64 */
+  logo?: string;
 }

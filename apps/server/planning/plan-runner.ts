@@ -49,7 +49,7 @@ async function attempt({ store, pool, job, frozen, record }: Work, hands: Hands)
   if (site === null) throw noSite(job.siteId);
   const content = contentOf(frozen);
   const revision = numberedRevision(site, frozen, content);
-  const task: PlanTask = { ...frozen, record, frame: await frameOf(store, revision) };
+  const task: PlanTask = { ...frozen, record, frame: { ...(await frameOf(store, revision)), ...sheetOf(frozen) } };
   const { result, proposal, ...rest } = await pool.run<PlanValue>('computePlan', task, hands);
   const sha256 = createHash('sha256').update(proposal).digest('hex');
   const complete: Revision = { ...revision, ...rest, result: JSON.stringify(result), verdict: result.verdict };
@@ -89,5 +89,11 @@ function numberedRevision(site: StoredSite, frozen: FrozenPlan, content: { text:
     createdAt: new Date(),
     author: frozen.author,
     reason: frozen.reason,
+  };
+}
+function sheetOf({ paper, logo }: FrozenPlan): Pick<PlanTask['frame'], 'paper' | 'logo'> {
+  return {
+    ...(paper === undefined ? {} : { paper }),
+    ...(logo === undefined ? {} : { logo: new Uint8Array(Buffer.from(logo, 'base64')) }),
   };
 }

@@ -7,7 +7,8 @@ import { Revision } from '#libs/store/revision.js';
 import { Store } from '#libs/store/store.js';
 import { ContractPipe } from '../contract-pipe.js';
 import { showJob } from '../jobs/show-job.js';
-import { type Actor, actorOf, CurrentActor } from '../people/actor.js';
+import { pathNumber } from '../path-number.js';
+import { type Actor, actorOf, CurrentActor, LOCAL_ACTOR } from '../people/actor.js';
 import { Needs } from '../people/needs.js';
 import { findSite } from '../sites/find-site.js';
 import { JOBS } from '../tokens.js';
@@ -93,7 +94,14 @@ export class PlanningController {
   ) {
     const actor = actorOf(reply.request);
     const site = await findSite(this.store, actor, siteId);
-    const asked = await this.planning.ask(kind, site, body, personOf(actor));
+    // With an account a plan carries its name, whatever is typed.
+    const author = actor === LOCAL_ACTOR ? body.author : actor.name;
+    const asked = await this.planning.ask(
+      kind,
+      site,
+      { ...body, ...(author === undefined ? {} : { author }) },
+      personOf(actor),
+    );
     if ('contentHash' in asked) return this.#send(asked, reply.status(200));
     const job = waitS === 0 ? asked : await this.jobs.result(asked.id, waitS);
     if (job.state === 'done') {

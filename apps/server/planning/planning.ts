@@ -9,6 +9,7 @@ import { zoneTableOf } from '#libs/contract/time-zone.js';
 import { ENGINE_VERSION, InputProblem } from '#libs/engine/index.js';
 import type { Jobs } from '#libs/jobs/jobs.js';
 import type { Person } from '#libs/review/review-act.js';
+import { readLogo } from '#libs/proposal/read-logo.js';
 import type { Job } from '#libs/store/job.js';
 import { Revision } from '#libs/store/revision.js';
 import { Store } from '#libs/store/store.js';
@@ -39,6 +40,7 @@ export class Planning {
     }
     const record = await this.#recordOf(stored.id, request.recordId);
     if (record === null && site.estimate === undefined) throw nothingToPlanWith();
+    if (request.logo !== undefined) readLogo(Buffer.from(request.logo, 'base64'));
     const zone = record === null ? estimateZone(site) : zoneTableOf(site.timeZone, record);
     const frozen: FrozenPlan = {
       kind,
@@ -49,6 +51,8 @@ export class Planning {
       author: request.author ?? null,
       reason: request.reason ?? null,
       ...(by === undefined ? {} : { preparedBy: by }),
+      ...(request.paper === undefined ? {} : { paper: request.paper }),
+      ...(request.logo === undefined ? {} : { logo: request.logo }),
     };
     return this.make(stored.id, frozen);
   }

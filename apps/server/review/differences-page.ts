@@ -10,9 +10,9 @@ const MOST_ROWS = 400;
 
 /** Two revisions side by side: only the fields that differ. */
 export function differencesPage(before: Revision, after: Revision, found: Differences): string {
-  const [one, other] = [before, after].map(({ revision }) => `revision ${revision}`);
+  const [one, other] = [`revision ${before.revision}`, `revision ${after.revision}`];
   const main = html`<h1>${before.number}: ${one} and ${other}</h1>
-${[part('about', 'Who, when, why, with what', found.about), part('inputs', 'Inputs', found.inputs), part('results', 'Results', found.results)].map((each) => each(one ?? '', other ?? ''))}
+${[part('about', 'Who, when, why, with what', found.about), part('inputs', 'Inputs', found.inputs), part('results', 'Results', found.results)].map((each) => each(one, other))}
 <p><a href="/api/sites/${before.siteId}/revisions/${before.revision}/differences/${after.revision}">All of it as JSON</a></p>`;
   return framedPage({ title: `${before.number}, ${one} and ${other} – Varwright`, main });
 }
