@@ -43,6 +43,7 @@ export * from './money/bill-range.js';
 export * from './money/capital.js';
 export * from './money/cash-flow.js';
 export * from './money/contract-advice.js';
+export * from './money/first-look.js';
 export * from './money/formula.js';
 export * from './money/formula-range.js';
 export * from './money/formula-tokens.js';
