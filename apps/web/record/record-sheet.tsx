@@ -67,7 +67,6 @@ function Understanding({ record }: { record: RecordShown | undefined }) {
             ['fixed', 'was in, fixed'],
             ['switching', 'was switching'],
             ['logged', 'is in the record'],
-            ['switching', 'the bank was switching'],
             ['unknown', 'not known'],
           ]}
         />
