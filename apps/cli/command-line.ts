@@ -77,7 +77,9 @@ function operandProblems({ operand, several }: Command, operands: string[], line
 
 // What belongs to one site can't be shared out among several.
 function severalProblems(operand: string, count: number, { loads, values, lists }: CommandLine): Problem[] {
-  const alone = ['pdf', 'extend'].filter((name) => values.has(name) || lists.has(name));
+  const alone = ['pdf', 'export', 'calculation', 'figures', 'extend'].filter(
+    (name) => values.has(name) || lists.has(name),
+  );
   return [
     ...(loads.length === count || loads.length === 0
       ? []
@@ -87,9 +89,10 @@ function severalProblems(operand: string, count: number, { loads, values, lists 
 }
 
 function stdinProblems(operands: string[], { values, lists, loads }: CommandLine): Problem[] {
-  const named = [...operands, ...loads, values.get('map'), ...(lists.get('extend') ?? [])];
+  const inputs = ['map', 'logo'].map((name) => values.get(name));
+  const named = [...operands, ...loads, ...inputs, ...(lists.get('extend') ?? [])];
   const files = named.filter((file) => file === STDIN);
-  const toStdin = ['pdf', 'netlist']
+  const toStdin = ['pdf', 'netlist', 'export', 'calculation', 'figures', 'keep']
     .filter((name) => values.get(name) === STDIN)
     .map((name) => usage(`--${name} with the name of a file`, '"-"'));
   return files.length > 1 ? [usage('"-" for one file only', `it ${files.length} times`), ...toStdin] : toStdin;

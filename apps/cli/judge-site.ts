@@ -9,13 +9,15 @@ import { WorkerPool } from '#libs/jobs/pool/worker-pool.js';
 import { sitesReport } from '#libs/present/sites-table.js';
 import type { CommandLine } from './command.js';
 import { usage } from './command-line.js';
-import { readJson } from './input-file.js';
 import type { Judged, JudgeTask } from './judge-worker.js';
 import { judgingProgress } from './judging-progress.js';
 import { readMeterRecord } from './meter-record.js';
 import { say, write, writeJson } from './output.js';
+import { paperSheet } from './paper-sheet.js';
+import { planExports } from './plan-exports.js';
 import { proposalTarget } from './proposal-target.js';
 import { inFile } from './refused-file.js';
+import { readSiteDocument } from './site-document.js';
 
 /** A site file with the meter file beside it, if there is one. */
 interface Asked {
@@ -33,13 +35,16 @@ interface Asked {
  */
 export async function judgeSite(line: CommandLine, kind: Outcome['kind']): Promise<number> {
   const pdf = line.values.get('pdf');
+  const sheet = await paperSheet(line);
   const target = pdf === undefined ? null : await proposalTarget(pdf);
+  const exports = await planExports(line);
   const asked: Asked[] = [];
   for (const [at, file] of line.operands.entries()) asked.push(await askedOf(line, kind, file, line.loads[at]));
   const pool = new WorkerPool(new URL('./judge-worker.js', import.meta.url), (error) => say(`fault: ${error}`), 1);
   const judged: Judged[] = [];
   try {
-    for (const one of asked) judged.push(await judge(line, pool, one, { kind, wantsProposal: target !== null }));
+    const of = { kind, sheet: target === null ? null : sheet, wantsOutcome: exports.areWanted };
+    for (const one of asked) judged.push(await judge(line, pool, one, of));
   } finally {
     await pool.close();
   }
@@ -49,6 +54,7 @@ export async function judgeSite(line: CommandLine, kind: Outcome['kind']): Promi
     await target.write(first.proposal);
     say(`proposal written to ${pdf}`);
   }
+  if (first?.outcome) for (const path of await exports.write(first.outcome)) say(`written: ${path}`);
   await tell(line, asked, judged);
   return judged.some(({ result }) => result.verdict === 'avoid') ? EXIT.avoid : EXIT.done;
 }
@@ -59,7 +65,7 @@ async function askedOf(
   file: string,
   load: string | undefined,
 ): Promise<Asked> {
-  const given = await inFile(file, async () => readSiteWithMathjs(await readJson(file)));
+  const given = await inFile(file, async () => readSiteWithMathjs(await readSiteDocument(file)));
   await inFile(file, async () => needOwnPapers(given));
   const site = frozenSite(given, Date.now() / 1000);
   if (load === undefined && site.estimate === undefined) {
@@ -74,7 +80,7 @@ async function judge(
   line: CommandLine,
   pool: WorkerPool,
   { file, site, load }: Asked,
-  of: Pick<JudgeTask, 'kind' | 'wantsProposal'>,
+  of: Pick<JudgeTask, 'kind' | 'sheet' | 'wantsOutcome'>,
 ): Promise<Judged> {
   const report = judgingProgress((progress) => say(`${file}: ${progress}`));
   const run = (record: LoadRecord | null): Promise<Judged> => {

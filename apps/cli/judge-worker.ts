@@ -26,6 +26,7 @@ import { packAnswer, type WorkerAnswer } from '#libs/jobs/pool/worker-answer.js'
 import { putEstimateInWords, putInWords } from '#libs/present/put-in-words.js';
 import { type SiteRow, siteRow } from '#libs/present/sites-table.js';
 import { estimateReport, resultReport } from '#libs/present/terminal-report.js';
+import type { PaperSheet } from './paper-sheet.js';
 
 /** A site to plan or judge. */
 export interface JudgeTask {
@@ -34,7 +35,10 @@ export interface JudgeTask {
   /** null where the site's own estimate stands in for it */
   record: LoadRecord | null;
   zone: ZoneTable;
-  wantsProposal: boolean;
+  /** null where no proposal is wanted */
+  sheet: PaperSheet | null;
+  /** the answer in full is sent back, to be written out in other forms */
+  wantsOutcome: boolean;
 }
 
 /** An answer in words, with what prints it. */
@@ -43,6 +47,7 @@ export interface Judged {
   report: string;
   row: SiteRow;
   proposal: Uint8Array | null;
+  outcome: Outcome | EstimateOutcome | null;
 }
 
 /** Shares of the whole at which planning, and weighing with the inputs moved, are done. */
@@ -54,12 +59,12 @@ export function judgeTask({ task, port }: { task: JudgeTask; port: MessagePort }
   return packAnswer(async () => {
     const watch = portWatch(port);
     const outcome = task.record === null ? byEstimate(task, watch) : byRecord(task, task.record, watch);
-    const contentHash = contentHashOf(task);
     return {
       result: outcome.result,
       report: isEstimate(outcome) ? estimateReport(outcome) : resultReport(outcome),
       row: siteRow(outcome),
-      proposal: task.wantsProposal ? await proposalOf(outcome, contentHash) : null,
+      proposal: task.sheet === null ? null : await proposalOf(outcome, task, task.sheet),
+      outcome: task.wantsOutcome ? outcome : null,
     };
   });
 }
@@ -77,21 +82,25 @@ function byEstimate({ kind, site, zone }: JudgeTask, watch: Watch): EstimateOutc
   return { ...computed, result: putEstimateInWords(computed.result) };
 }
 
-function contentHashOf({ kind, site, record, zone }: JudgeTask): string {
-  const recordHash = record === null ? null : sha256(recordBytes(record));
-  return sha256([planContent({ kind, site, recordHash, zone, engineVersion: ENGINE_VERSION })]);
-}
-
 /** The drawing of papers is loaded only where one is wanted. */
-async function proposalOf(outcome: Outcome | EstimateOutcome, contentHash: string): Promise<Uint8Array> {
+async function proposalOf(
+  outcome: Outcome | EstimateOutcome,
+  { kind, site, record, zone }: JudgeTask,
+  sheet: PaperSheet,
+): Promise<Uint8Array> {
   const { renderProposal } = await import('#libs/proposal/render-proposal.js');
+  const recordHash = record === null ? null : sha256(recordBytes(record));
+  const contentHash = sha256([planContent({ kind, site, recordHash, zone, engineVersion: ENGINE_VERSION })]);
   return renderProposal(outcome, {
     number: contentHash.slice(0, 8),
     revision: 0,
     state: 'draft, not reviewed',
     preparedBy: null,
     contentHash,
+    recordHash,
     engineVersion: ENGINE_VERSION,
+    date: outcome.site.asOf,
+    ...sheet,
   });
 }
 

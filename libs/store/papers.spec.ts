@@ -1,30 +1,31 @@
 import { afterEach, beforeEach, describe, expect, it } from 'vitest';
 import { databases, type TestDatabase } from '../../test/support/databases.js';
 import { openStore } from './open-store.js';
+import { FIRST_ORGANISATION } from './organisation.js';
 import { findPaper, insertPaper } from './papers.js';
 import type { Store } from './store.js';
 
 const NOW = new Date('2026-01-31T10:20:30.456Z');
 
-for (const { name: database, available, create } of databases) {
-  describe.runIf(available)(`shared papers on ${database}`, () => {
-    let own: TestDatabase;
+const own = { organisationId: FIRST_ORGANISATION, kind: 'tariff', name: 'Works tariff' } as const;
+
+for (const { name, available, create } of databases) {
+  describe.runIf(available)(`shared papers on ${name}`, () => {
+    let database: TestDatabase;
     let store: Store;
     const insert = (id: string, after: number | null, document: object = { b: 1, a: 2 }) =>
-      store.write((manager) =>
-        insertPaper(manager, { id, kind: 'tariff', name: 'Works tariff', date: '2026-01-01', document, after }, NOW),
-      );
+      store.write((manager) => insertPaper(manager, { id, ...own, date: '2026-01-01', document, after }, NOW));
     const find = (version?: number) =>
-      store.read((manager) => findPaper(manager, 'tariff', { name: 'Works tariff', version }, 'papers.tariff'));
+      store.read((manager) => findPaper(manager, { ...own, version }, 'papers.tariff'));
 
     beforeEach(async () => {
-      own = await create();
-      store = await openStore(own.url);
+      database = await create();
+      store = await openStore(database.url);
     });
 
     afterEach(async () => {
       await store.close();
-      await own.drop();
+      await database.drop();
     });
 
     it('are found by name: the latest, or the version asked for, letter for letter', async () => {
@@ -35,7 +36,7 @@ for (const { name: database, available, create } of databases) {
       expect(first).toMatchObject({ id: 'a', version: 1, date: '2026-01-01', createdAt: NOW });
       expect(JSON.stringify(first.document)).toBe('{"b":1,"a":2}');
       await expect(find(3)).rejects.toMatchObject({ code: 'not-found' });
-      const prices = store.read((manager) => findPaper(manager, 'prices', { name: 'Works tariff' }, 'papers.prices'));
+      const prices = store.read((manager) => findPaper(manager, { ...own, kind: 'prices' }, 'papers.prices'));
       await expect(prices).rejects.toMatchObject({ problems: [{ code: 'not-found', path: 'papers.prices' }] });
     });
 

@@ -3,7 +3,12 @@ import { InputProblem } from '#libs/engine/index.js';
 import { Paper, type PaperKind } from './paper.js';
 
 /** A paper as it is given: `after` is the version it follows, null for the first of its name. */
-export type NewPaper = Pick<Paper, 'id' | 'kind' | 'name' | 'date' | 'document'> & { after: number | null };
+export type NewPaper = Pick<Paper, 'id' | 'organisationId' | 'kind' | 'name' | 'date' | 'document'> & {
+  after: number | null;
+};
+
+/** Under what a paper is found. */
+export type PaperKey = Pick<Paper, 'organisationId' | 'kind' | 'name'>;
 
 /** What a paper is called among people. */
 const KIND_WORDS: Record<PaperKind, string> = { tariff: 'a shared tariff', prices: 'a shared price book' };
@@ -18,7 +23,7 @@ const KIND_WORDS: Record<PaperKind, string> = { tariff: 'a shared tariff', price
  */
 export async function insertPaper(manager: EntityManager, { after, ...given }: NewPaper, now: Date): Promise<Paper> {
   await waitForVersions(manager);
-  const latest = (await latestPaper(manager, given.kind, given.name))?.version ?? 0;
+  const latest = (await latestPaper(manager, given))?.version ?? 0;
   if (after === null && latest > 0) {
     const expected = `a name that no other has, or "after" with the latest version, ${latest}`;
     throw new InputProblem([{ code: 'conflict', path: 'name', expected, found: JSON.stringify(given.name) }]);
@@ -36,29 +41,27 @@ export async function insertPaper(manager: EntityManager, { after, ...given }: N
 /**
  * A paper by its name.
  * @param manager of a read or a write
- * @param kind tariff or prices
- * @param reference name, and the version where one is asked for
+ * @param reference whose it is, its kind and name, and the version where one is asked for
  * @param path of the reference, for a refusal
  * @throws InputProblem `not-found`
  */
 export async function findPaper(
   manager: EntityManager,
-  kind: PaperKind,
-  reference: { name: string; version?: number | undefined },
+  reference: PaperKey & { version?: number | undefined },
   path: string,
 ): Promise<Paper> {
-  const { name, version } = reference;
+  const { organisationId, kind, name, version } = reference;
   const found =
     version === undefined
-      ? await latestPaper(manager, kind, name)
-      : await manager.findOneBy(Paper, { kind, name, version });
+      ? await latestPaper(manager, reference)
+      : await manager.findOneBy(Paper, { organisationId, kind, name, version });
   if (found !== null) return found;
   const told = version === undefined ? JSON.stringify(name) : `${JSON.stringify(name)}, version ${version}`;
   throw new InputProblem([{ code: 'not-found', path, expected: `${KIND_WORDS[kind]} that exists`, found: told }]);
 }
 
-function latestPaper(manager: EntityManager, kind: PaperKind, name: string): Promise<Paper | null> {
-  return manager.findOne(Paper, { where: { kind, name }, order: { version: 'DESC' } });
+function latestPaper(manager: EntityManager, { organisationId, kind, name }: PaperKey): Promise<Paper | null> {
+  return manager.findOne(Paper, { where: { organisationId, kind, name }, order: { version: 'DESC' } });
 }
 
 /** Any number of this program's own, other than its other locks. */

@@ -1,8 +1,8 @@
 import { type MigrationInterface, type QueryRunner, Table } from 'typeorm';
 import { sqlType } from '#libs/store/columns.js';
 
-/** Tariffs and price books as papers of their own. */
-export class SharedPapers1764640800000 implements MigrationInterface {
+/** Tariffs and price books as papers of their own, each an organisation's. */
+export class SharedPapers1764655200000 implements MigrationInterface {
   async up(runner: QueryRunner): Promise<void> {
     const { type } = runner.dataSource.options;
     await runner.createTable(
@@ -10,6 +10,7 @@ export class SharedPapers1764640800000 implements MigrationInterface {
         name: 'paper',
         columns: [
           { name: 'id', type: 'varchar', length: '36', isPrimary: true },
+          { name: 'organisationId', type: 'varchar', length: '36', default: "'first'" },
           { name: 'kind', type: 'varchar', length: '16' },
           { name: 'name', type: 'varchar', length: '80' },
           { name: 'version', type: 'integer' },
@@ -17,7 +18,17 @@ export class SharedPapers1764640800000 implements MigrationInterface {
           { name: 'document', type: sqlType('json', type) },
           { name: 'createdAt', type: sqlType('instant', type) },
         ],
-        indices: [{ name: 'paper_version', columnNames: ['kind', 'name', 'version'], isUnique: true }],
+        indices: [
+          { name: 'paper_version', columnNames: ['organisationId', 'kind', 'name', 'version'], isUnique: true },
+        ],
+        foreignKeys: [
+          {
+            name: 'paper_organisation_fk',
+            columnNames: ['organisationId'],
+            referencedTableName: 'organisation',
+            referencedColumnNames: ['id'],
+          },
+        ],
       }),
     );
   }
