@@ -65,7 +65,8 @@ function operandProblems({ operand }: Command, operands: string[]): Problem[] {
 }
 
 function stdinProblems(operands: string[], { values, lists }: CommandLine): Problem[] {
-  const named = [...operands, values.get('load'), values.get('map'), ...(lists.get('extend') ?? [])];
+  const single = ['load', 'map', 'before', 'before-load'].map((name) => values.get(name));
+  const named = [...operands, ...single, ...(lists.get('extend') ?? [])];
   const files = named.filter((file) => file === STDIN);
   const toStdin = ['pdf', 'netlist']
     .filter((name) => values.get(name) === STDIN)

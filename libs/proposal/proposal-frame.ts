@@ -1,3 +1,4 @@
+import type { Reevaluation } from '#libs/engine/index.js';
 import type { PaperSize } from './paper.js';
 
 /** What a proposal carries besides the outcome it prints. */
@@ -10,4 +11,6 @@ export interface ProposalFrame {
   contentHash: string;
   engineVersion: string;
   paper?: PaperSize;
+  /** where an installed bank was judged again */
+  reevaluation?: Reevaluation;
 }
