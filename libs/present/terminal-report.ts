@@ -17,6 +17,7 @@ import { plainName } from './plain-name.js';
 import { estimateWords, proposedWords } from './proposed-words.js';
 import { gradeWords, MONTH_HEADS, monthCells, type QualityStated, qualityRows } from './quality-words.js';
 import { remarkConsequence, remarkSentence } from './remark-words.js';
+import { HISTORY_HEADS, historyRows } from './stage-history-words.js';
 import { spareWaysLines } from './spare-ways-lines.js';
 import { finished, tableLines } from './terminal-lines.js';
 import { countDuties, NO_PERMISSION, verdictWords } from './verdict-words.js';
@@ -60,6 +61,7 @@ export function resultReport(outcome: Outcome): string {
     ...spareRows(outcome),
     ...dutyLines(outcome),
     ...deviceLines(outcome),
+    ...measuredLines(outcome),
     ...reasonLines(outcome),
     ...questionLines(result.record),
   ];
@@ -247,6 +249,11 @@ function deviceLines(outcome: BankOutcome): string[] {
     ...lines.flatMap((line) => wrapped(`  ${line}`, '    ')),
     '',
   ];
+}
+
+function measuredLines({ result }: BankOutcome): string[] {
+  const { measured } = result.ageing;
+  return measured.length === 0 ? [] : [...tableLines([...HISTORY_HEADS], historyRows(measured)), ''];
 }
 
 function reasonLines({ result }: BankOutcome): string[] {

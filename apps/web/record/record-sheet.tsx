@@ -56,6 +56,7 @@ export function RecordSheet() {
                 ['out', 'stood out'],
                 ['fixed', 'was in, fixed'],
                 ['logged', 'is in the record'],
+                ['switching', 'the bank was switching'],
                 ['unknown', 'not known'],
               ]}
             />
