@@ -20,7 +20,7 @@ import { drawMethod } from './section-method.js';
 import { drawMoney } from './section-money.js';
 import { drawNetwork } from './section-network.js';
 import { drawSensitivity } from './section-sensitivity.js';
-import { drawSignatures } from './section-signatures.js';
+import { drawAccepted, drawSignatures } from './section-signatures.js';
 import { drawSiteActions } from './section-site-actions.js';
 import { drawHistory } from './section-history.js';
 import { drawMaintenance } from './section-maintenance.js';
@@ -57,6 +57,7 @@ export async function renderProposal(outcome: Outcome | EstimateOutcome, frame: 
   drawDecision(paper, outcome, logo);
   drawSignatures(paper, frame);
   drawFindings(paper, outcome);
+  drawAccepted(paper, frame);
   drawBasis(paper, outcome);
   drawAssumptions(paper, outcome);
   if (isEstimate(outcome)) drawEstimate(paper, outcome);
