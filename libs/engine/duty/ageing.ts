@@ -4,7 +4,7 @@ import { deltaCapacitanceUf, tunedOrderH } from '../layout/stage.js';
 import type { NetworkModel } from '../network/network-model.js';
 import { InputProblem } from '../problem.js';
 import { type JudgeBasis, judgeBank } from './judge-bank.js';
-import { quickJudge } from './quick-judge.js';
+import { firmVerdict, quickJudge } from './quick-judge.js';
 import { graver, type Verdict } from './rules.js';
 
 /** A bank with capacitors that have lost some of their capacitance, judged beside the corners. */
@@ -69,15 +69,17 @@ export function ageing(model: NetworkModel, bank: Bank, basis: JudgeBasis, given
       verdict: judgeBank(model, all, levels, basis).verdict,
     },
   ];
-  const verdictOf = (one: Bank): Verdict | null => flowsVerdict(model, one, basis);
   for (const [g, group] of bank.groups.entries()) {
     const measuredUf = given?.stages[g]?.measuredUf;
     const nameplateUf = deltaCapacitanceUf(group, frequencyHz);
     const factor = measuredUf === undefined ? END_OF_LIFE[from] : measuredUf / nameplateUf;
     const alone = aged(bank, g, factor);
     const how = measuredUf === undefined ? from : 'measured';
-    cases.push({ ...described(alone, g, { frequencyHz, factor, from: how }), verdict: verdictOf(alone) });
+    const verdict = ofStages(() => firmVerdict(model, alone, basis).verdict);
+    cases.push({ ...described(alone, g, { frequencyHz, factor, from: how }), verdict });
   }
+  // The search for a stage's end asks too often to look for peaks of |Z| as well.
+  const verdictOf = (one: Bank): Verdict | null => ofStages(() => quickJudge(model, one, basis).verdict);
   return { cases, stages: bank.groups.map((_, g) => stageEnd(bank, g, { frequencyHz, verdictOf })) };
 }
 
@@ -120,10 +122,10 @@ export function aged(bank: Bank, group: number | null, factor: number): Bank {
   return { ...bank, groups: [...rest, { ...less(bank.groups[group]!), count: 1 }] };
 }
 
-// Flows of every level and corner; a peak near an order present is looked for in the case of all stages alone.
-function flowsVerdict(model: NetworkModel, bank: Bank, basis: JudgeBasis): Verdict | null {
+// An aged stage is a group of its own, and may make too many combinations.
+function ofStages(judged: () => Verdict): Verdict | null {
   try {
-    return quickJudge(model, bank, basis).verdict;
+    return judged();
   } catch (error) {
     if (error instanceof InputProblem && error.code === 'too-many-levels') return null;
     throw error;
