@@ -89,7 +89,7 @@ function severalProblems(operand: string, count: number, { loads, values, lists 
 }
 
 function stdinProblems(operands: string[], { values, lists, loads }: CommandLine): Problem[] {
-  const inputs = ['map', 'logo'].map((name) => values.get(name));
+  const inputs = ['map', 'logo', 'before', 'before-load'].map((name) => values.get(name));
   const named = [...operands, ...loads, ...inputs, ...(lists.get('extend') ?? [])];
   const files = named.filter((file) => file === STDIN);
   const toStdin = ['pdf', 'netlist', 'export', 'calculation', 'figures', 'keep']
