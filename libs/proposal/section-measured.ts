@@ -19,8 +19,10 @@ export function drawMeasured(paper: Paper, outcome: BankOutcome): void {
   const { measured } = outcome.result;
   if (measured === null || measured.rows.length === 0) return;
   const off = measured.rows.filter(({ standing }) => standing !== 'within').length;
-  const words =
+  const isFit = outcome.site.facts.measured?.use === 'fit';
+  const within =
     off === 0 ? 'every reading lies within the model’s corners' : `${off} readings lie outside the model’s corners`;
+  const words = isFit ? 'the loads’ currents are fitted to it' : within;
   paper.heading('9.7', `Measured at ${plainName(measured.bus)}: ${words}`, { level: 3 });
   const rows = measured.rows.map((row) => [
     formatNumber(row.orderH, 'given'),
@@ -34,8 +36,9 @@ export function drawMeasured(paper: Paper, outcome: BankOutcome): void {
   drawTable(paper, COLUMNS, rows, { after: 4 });
   paper.paragraph(
     [
-      `With ${formatQuantity(measured.levelKvar, 'kvar')} connected. A reading checks the model and is never added to its ` +
-        'sources; it stands outside where it passes the corners by more than a tenth.',
+      `With ${formatQuantity(measured.levelKvar, 'kvar')} connected. A reading is never added to the model’s sources; it ` +
+        'stands outside where it passes the corners by more than a tenth.' +
+        (isFit ? ' The loads’ currents were scaled to meet it, so that agreement is no check of the model.' : ''),
     ],
     { style: NOTE },
   );
