@@ -91,6 +91,36 @@ describe('ageing', () => {
     expect(aged.capacitanceFactor).toBeCloseTo(0.7, 12);
   });
 
+  it('takes what was measured of each stage over the years, and the end of life of a stage that was not', () => {
+    const [first, second] = BANK.stages as [BankInput['stages'][0], BankInput['stages'][0]];
+    // I = U/(√3·(X_C/left − X_L)) with X_C = U_N²/Q_N, as a clamp meter reads it on a stage with that much left.
+    const amps = (left: number): number => 400 / (Math.sqrt(3) * (480 ** 2 / 50_000) * (1 / left - 0.07));
+    const reading = (stage: number, date: string, left: number) => {
+      const lineA: [number, number, number] = [amps(left), amps(left), amps(left)];
+      return { stage, date, busV: 400, lineA };
+    };
+    const judged = (measurements: ReturnType<typeof reading>[]) =>
+      assessedSite({
+        asOf: '2026-01-31',
+        bank: { stages: [first, { ...second, commissioned: '2016-01-01', measurements }], installed: true },
+      }).ageing;
+    const some = judged([reading(2, '2020-01-01', 0.95), reading(2, '2024-01-01', 0.91)]);
+    expect(some.cases[2]).toMatchObject({ from: 'installed', capacitanceFactor: 0.8 });
+    const [history] = some.measured;
+    expect(history).toMatchObject({ group: 1, stage: 2, rateFrom: 'measurements' });
+    // 4 % in the 1 461 days between.
+    expect(history!.lossPctPerYear).toBeCloseTo(1, 9);
+    expect(history!.points.map(({ ratedKvar }) => ratedKvar)).toEqual([
+      expect.closeTo(47.5, 9),
+      expect.closeTo(45.5, 9),
+    ]);
+    const low = judged([reading(3, '2024-01-01', 0.72)]);
+    expect(low.cases[2]).toMatchObject({ from: 'measured', capacitanceFactor: expect.closeTo(0.72, 12) });
+    expect(low.measured[0]).toMatchObject({ rateFrom: 'nameplate', lossPctPerYear: expect.closeTo(28 / 8, 2) });
+    const whole = judged([1, 2, 3].map((stage) => reading(stage, '2024-01-01', 0.97 - 0.01 * stage)));
+    expect(whole.cases[2]).toMatchObject({ from: 'measured', capacitanceFactor: expect.closeTo(0.94, 12) });
+  });
+
   it('leaves the verdict alone: it stands beside the corners, not among them', () => {
     const { installed, ...result } = { installed: assessedSite({ bank: { ...BANK, installed: true } }), ...plain };
     expect(installed.verdict).toBe(result.verdict);

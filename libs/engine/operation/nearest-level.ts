@@ -1,4 +1,5 @@
 import type { Decision } from './decide.js';
+import { FreeLevels } from './free-levels.js';
 import type { SwitchedBank } from './switched-bank.js';
 
 /** Comparisons of candidates carry this share of the smallest stage. */
@@ -23,6 +24,9 @@ export class NearestLevel {
   /** least and most the classes from a place of the order on can give, switchings not counted [kvar] */
   readonly #leastFrom: Float64Array;
   readonly #mostFrom: Float64Array;
+  readonly #bank: SwitchedBank;
+  /** absent until it is asked for */
+  #levels: FreeLevels | null | undefined;
   #choosing = false;
   #leastOff = 0;
   #fewest = 0;
@@ -33,6 +37,7 @@ export class NearestLevel {
    * @param decision state of the interval, read and filled at every choice
    */
   constructor(bank: SwitchedBank, decision: Decision) {
+    this.#bank = bank;
     this.#decision = decision;
     this.#nominalKvar = Float64Array.from(bank.classes, ({ kvar }) => kvar);
     this.#kvar = new Float64Array(bank.classes.length);
@@ -57,6 +62,13 @@ export class NearestLevel {
       chosen[0] = this.#nearestOfOneSize();
       return;
     }
+    if (voltageScale === 1 && this.#allAreFree()) {
+      if (this.#levels === undefined) this.#levels = FreeLevels.of(this.#bank, this.#tolerance);
+      if (this.#levels !== null) {
+        this.#levels.chooseInto(chosen, this.#decision.wantedKvar - this.#fixedKvar, connected);
+        return;
+      }
+    }
     for (let c = 0; c < this.#kvar.length; c++) this.#kvar[c] = this.#nominalKvar[c]! * voltageScale;
     this.#reachInto();
     const fixedKvar = this.#fixedKvar * voltageScale;
@@ -68,6 +80,18 @@ export class NearestLevel {
     this.#fewest = Number.MAX_SAFE_INTEGER;
     this.#lowestKvar = Number.POSITIVE_INFINITY;
     this.#walk(0, fixedKvar, 0);
+  }
+
+  // Whatever is out may be connected, and as much be switched as there is.
+  #allAreFree(): boolean {
+    const { connected, free, mostSwitchings } = this.#decision;
+    let switched = 0;
+    for (let c = 0; c < connected.length; c++) {
+      const stages = this.#bank.classes[c]!.stages.length;
+      if (connected[c]! + free[c]! !== stages) return false;
+      switched += stages;
+    }
+    return mostSwitchings >= switched;
   }
 
   // The nearest count lies beside wanted/kvar, held within reach; of two equally near the one with fewer switchings.

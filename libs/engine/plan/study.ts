@@ -16,6 +16,7 @@ import { type BusLoad, busLoad, type OldBank } from '../requirement/bus-load.js'
 import { needColumn, type Target, targetKw } from '../requirement/need.js';
 import { type RequirementSummary, summarizeRequirement } from '../requirement/requirement.js';
 import { meteringOf } from './metering-of.js';
+import { type TurnedLoad, turnedLoad } from './recorded-bank.js';
 import { runColumns } from './run-columns.js';
 import { settleSite } from './settle-site.js';
 import type { SettledSite } from './settled-site.js';
@@ -36,6 +37,8 @@ export interface Study {
   model: NetworkModel;
   /** (U/U_nom)² per interval, or null */
   voltageScale: Float64Array | null;
+  /** the range of a record that was taken with a bank switching; null for any other */
+  turned: TurnedLoad | null;
 }
 
 /**
@@ -49,7 +52,9 @@ export interface Study {
  */
 export function studySite(site: Site, record: LoadRecord, zone: ZoneTable): Study {
   const { site: settled, assumptions } = settleSite(site, record);
-  const load = busLoad(record, meteringOf(settled), oldBank(settled));
+  const net = busLoad(record, meteringOf(settled), oldBank(settled));
+  const turned = turnedLoad(site, settled, net, record);
+  const load = turned?.load ?? net;
   const target: Target = { powerFactor: settled.targetPowerFactor, onExport: settled.onExport };
   const needKvar = needColumn(load, target, record.beginS);
   const months = monthIndex(record.beginS, zone);
@@ -75,6 +80,7 @@ export function studySite(site: Site, record: LoadRecord, zone: ZoneTable): Stud
       primary: couplesAtPrimary(settled),
     }),
     voltageScale: record.voltageV?.map((u) => (u / settled.nominalV) ** 2) ?? null,
+    turned,
   };
 }
 
