@@ -97,6 +97,7 @@ const loads = z.strictObject({
   ).optional(),
   measured: z
     .strictObject({
+      use: z.enum(['check', 'fit']).optional(),
       place: label().optional(),
       loadKw: quantity('loadKw').optional(),
       bankKvar: quantity('bankKvar', NOT_NEGATIVE),
