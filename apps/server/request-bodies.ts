@@ -1,7 +1,7 @@
-import type { FastifyInstance } from 'fastify';
+import type { FastifyInstance, FastifyRequest } from 'fastify';
 import { RefusedRequest } from './refused-request.js';
 
-const UPLOADS = /\/records(\/:recordId\/revisions)?$|^\/api\/verify$/;
+const UPLOADS = /\/records(\/:recordId\/revisions)?$|^\/api\/(verify|site-imports)$/;
 /** Pages that work without scripts send forms; nothing else takes them. */
 const FORMS = /^\/(sign-in|sign-out|people|account)(\/|$)/;
 const FORM_TYPE = 'application/x-www-form-urlencoded';
@@ -29,12 +29,17 @@ export function refuseOtherBodies(fastify: FastifyInstance): void {
     else done(otherType('application/json'));
   });
   fastify.addHook('preValidation', async (request) => {
-    const isUpload = UPLOADS.test(request.routeOptions.url ?? '') && request.method === 'POST';
+    const isUpload = takesFile(request);
     const type = request.headers['content-type'] ?? 'nothing';
     const isFile = request.isMultipart() || FILE_TYPES.some((known) => type.startsWith(known));
     if (isUpload && !isFile) throw otherType(`multipart/form-data, ${FILE_TYPES.join(' or ')}`);
     if (!isUpload && isFile) throw otherType('application/json');
   });
+}
+
+/** Whether the body of a request is a file, or a form with one. */
+export function takesFile({ routeOptions, method }: FastifyRequest): boolean {
+  return UPLOADS.test(routeOptions.url ?? '') && method === 'POST';
 }
 
 /** JSON.parse, but a key that would reach an object's prototype is refused rather than dropped. */

@@ -12,16 +12,22 @@ import { Store } from '#libs/store/store.js';
 import { type Registered, refuseUndeclared, routesOf } from './declared-routes.js';
 import { DemoController } from './demo/demo-controller.js';
 import { loadDemo } from './demo/load-demo.js';
+import { ExportsController } from './exports/exports-controller.js';
+import { SiteImportsController } from './exports/site-imports-controller.js';
 import { HealthController } from './health/health-controller.js';
 import { HomeController } from './home/home-controller.js';
 import { JobsController } from './jobs/jobs-controller.js';
 import { KeptMapsController } from './kept-maps/kept-maps-controller.js';
+import { LinkedController } from './links/linked-controller.js';
+import { LinksController } from './links/links-controller.js';
 import { foreignCheck } from './local-requests.js';
+import { Once, replay } from './once/once.js';
 import { OpenApi } from './open-api.js';
 import { OpenApiController } from './open-api-controller.js';
 import type { Confirm } from './people/confirm.js';
 import { PageController } from './page/page-controller.js';
 import { PageFiles } from './page/page-files.js';
+import { AccountPageController } from './people/account-page-controller.js';
 import { Accounts, type Reach } from './people/accounts.js';
 import { Admission } from './people/admission.js';
 import { Keys } from './people/keys.js';
@@ -29,6 +35,7 @@ import { KeysController } from './people/keys-controller.js';
 import { type HashCost, PRESENT_COST } from './people/password-hash.js';
 import { People } from './people/people.js';
 import { PeopleController } from './people/people-controller.js';
+import { PeoplePageController } from './people/people-page-controller.js';
 import { SessionController } from './people/session-controller.js';
 import { SignInController } from './people/sign-in-controller.js';
 import { planRunner } from './planning/plan-runner.js';
@@ -40,7 +47,7 @@ import { RecordImport } from './records/record-import.js';
 import { RecordsController } from './records/records-controller.js';
 import { Spool } from './records/spool.js';
 import { UploadIntake } from './records/upload-intake.js';
-import { refuseOtherBodies } from './request-bodies.js';
+import { refuseOtherBodies, takesFile } from './request-bodies.js';
 import { DifferencesController } from './review/differences-controller.js';
 import { ReviewController } from './review/review-controller.js';
 import { ReviewPageController } from './review/review-page-controller.js';
@@ -75,11 +82,17 @@ const CONTROLLERS: ServerParts['controllers'] = [
   DifferencesController,
   VerifyController,
   KeptMapsController,
+  ExportsController,
+  SiteImportsController,
   JobsController,
   SessionController,
   PeopleController,
   KeysController,
   SignInController,
+  AccountPageController,
+  PeoplePageController,
+  LinksController,
+  LinkedController,
   DemoController,
   OpenApiController,
   UnknownController,
@@ -127,6 +140,7 @@ export async function createServer(
     providers: [
       { provide: Store, useValue: store },
       { provide: Accounts, useValue: accounts },
+      { provide: Once, useValue: new Once(store) },
       { provide: Spool, useValue: spool },
       { provide: WorkerPool, useValue: pool },
       { provide: JOBS, useValue: jobs },
@@ -198,7 +212,7 @@ async function serve(
   app.useGlobalFilters(new ProblemFilter(log));
   const accounts = app.get(Accounts);
   const admission = new Admission((request) => accounts.recognise(request));
-  await harden(fastify, { settings, log, admission });
+  await harden(fastify, { settings, log, admission, once: app.get(Once) });
   await app.init();
   const routes = routesOf(app);
   refuseUndeclared(routes, registered);
@@ -209,7 +223,7 @@ async function serve(
 
 async function harden(
   fastify: FastifyInstance,
-  { settings, log, admission }: { settings: Settings; log: ServerLog; admission: Admission },
+  { settings, log, admission, once }: { settings: Settings; log: ServerLog; admission: Admission; once: Once },
 ): Promise<void> {
   // Served by plain http on this machine: asking a browser for https would leave the page blank.
   await fastify.register(helmet, {
@@ -226,6 +240,13 @@ async function harden(
     await admission.admit(request, reply);
     return reply.sent ? reply : undefined;
   });
+  fastify.addHook('preHandler', async (request, reply) => {
+    // A file is known by its hash, once it was received; its route asks then.
+    if (takesFile(request)) return;
+    const answered = await once.begin(request, request.body);
+    return answered === null ? undefined : replay(reply, answered).send(answered.body);
+  });
+  fastify.addHook('onSend', async (request, reply, payload) => once.end(request, reply, payload));
   fastify.addHook('onResponse', async (request, reply) => {
     const route = request.routeOptions.url ?? 'none';
     log.answered({ method: request.method, route, status: reply.statusCode, ms: Math.round(reply.elapsedTime) });

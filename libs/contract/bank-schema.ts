@@ -1,8 +1,37 @@
 import * as z from 'zod';
-import { CAPACITOR_V, label, listOf, POSITIVE, plain, quantity, reactorPct, whole } from './schema-parts.js';
+import {
+  CAPACITOR_V,
+  label,
+  listOf,
+  localDay,
+  NOT_NEGATIVE,
+  POSITIVE,
+  plain,
+  quantity,
+  type Range,
+  reactorPct,
+  whole,
+} from './schema-parts.js';
 
 /** A tuned order: below about 1.1 the reactor would leave no capacitor, above 50 there is none to speak of. */
 const TUNED_ORDER = { min: 1.07, max: 50 };
+
+const three = (name: string, range: Range) => {
+  const one = quantity(name, range);
+  return z.tuple([one, one, one]);
+};
+
+/** One stage as it was measured on the site. */
+const stageMeasurement = z.strictObject({
+  stage: whole(1, 100),
+  date: localDay(),
+  busV: quantity('busV', POSITIVE).optional(),
+  frequencyHz: quantity('frequencyHz', POSITIVE).optional(),
+  lineA: three('lineA', NOT_NEGATIVE).optional(),
+  terminalUf: three('terminalUf', POSITIVE).optional(),
+  connection: z.enum(['delta', 'star', 'earthedStar']).optional(),
+  instrument: label().optional(),
+});
 
 /** A group of equal stages; the reactor is given by its ratio, by what it is tuned to, or by its inductance. */
 export const stageGroupSchema = z.strictObject({
@@ -23,6 +52,8 @@ export const stageGroupSchema = z.strictObject({
   capacitanceUf: quantity('capacitanceUf', POSITIVE).optional(),
   measuredUf: quantity('measuredUf', POSITIVE).optional(),
   reactorMh: quantity('reactorMh', POSITIVE).optional(),
+  commissioned: localDay().optional(),
+  measurements: listOf(stageMeasurement, 1, 500).optional(),
 });
 
 /** The bank of a site, with what is fitted around it. */

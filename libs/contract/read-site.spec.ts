@@ -123,7 +123,6 @@ const refused: [why: string, json: unknown, path: string | undefined, code: stri
   ['a power factor above 1', siteWith({ target: { powerFactor: 1.01 } }), 'target.powerFactor', 'out-of-range'],
   ['a power factor of 0', siteWith({ target: { powerFactor: 0 } }), 'target.powerFactor', 'out-of-range'],
   ['a negative delay', siteWith({ control: { stepDelayS: -1 } }), 'control.stepDelayS', 'out-of-range'],
-  ['a switching bank', siteWith({ recordedBank: { state: 'switching' } }), 'recordedBank.state', 'not-supported-yet'],
   ['a fixed bank without its kvar', siteWith({ recordedBank: { state: 'fixed' } }), 'recordedBank.kvar', 'missing'],
   [
     'kvar of a bank that is not there',

@@ -146,12 +146,20 @@ function repeatedOrders(orders: unknown[], path: PropertyKey[]): RuleBreach[] {
   }));
 }
 
+/** A bank that was switching has a nameplate, its own or the site's. */
 function stateRules(site: Readable): RuleBreach[] {
+  if (partAt(site, 'recordedBank', 'state') !== 'switching') return [];
   const breaches: RuleBreach[] = [];
-  if (partAt(site, 'recordedBank', 'state') === 'switching') {
-    const expected =
-      '"none", "out", "fixed", "logged" or "unknown": a switching bank cannot be taken out of a record yet';
-    breaches.push({ code: 'not-supported-yet', path: ['recordedBank', 'state'], expected, found: '"switching"' });
+  if (partAt(site, 'recordedBank', 'bank') === undefined && partAt(site, 'bank') === undefined) {
+    const expected = 'the bank that was switching, here or as the site’s bank';
+    breaches.push({ code: 'missing', path: ['recordedBank', 'bank'], expected, found: 'nothing' });
+  }
+  const min = numberAt(site, 'recordedBank', 'loadPowerFactor', 'min');
+  const max = numberAt(site, 'recordedBank', 'loadPowerFactor', 'max');
+  if (min > max) {
+    const path = ['recordedBank', 'loadPowerFactor', 'min'];
+    const expected = `at most recordedBank.loadPowerFactor.max, ${max}`;
+    breaches.push({ code: 'inconsistent', path, expected, found: `${min}` });
   }
   return breaches;
 }

@@ -34,22 +34,30 @@ const bus = z.strictObject({
   highestV: quantity('highestV', { min: 50, max: 1e6 }).optional(),
 });
 
-const recordedBank = z.discriminatedUnion('state', [
-  z.strictObject({ state: z.literal('none') }),
-  z.strictObject({ state: z.literal('out') }),
-  z.strictObject({ state: z.literal('fixed'), kvar: quantity('kvar', NOT_NEGATIVE) }),
-  z.strictObject({ state: z.literal('logged') }),
-  z.strictObject({ state: z.literal('switching') }),
-  z.strictObject({ state: z.literal('unknown') }),
-]);
-
-const control = z.strictObject({
+const settings = z.strictObject({
   setPointPowerFactor: plain(POWER_FACTOR).optional(),
   mode: z.enum(['nearestLevel', 'oneByOne']).optional(),
   responseRatio: plain({ above: 0, max: 1 }).optional(),
   stepDelayS: quantity('stepDelayS', DELAY).optional(),
   reconnectDelayS: quantity('reconnectDelayS', DELAY).optional(),
   wear: z.enum(['even', 'inOrder']).optional(),
+});
+
+const recordedBank = z.discriminatedUnion('state', [
+  z.strictObject({ state: z.literal('none') }),
+  z.strictObject({ state: z.literal('out') }),
+  z.strictObject({ state: z.literal('fixed'), kvar: quantity('kvar', NOT_NEGATIVE) }),
+  z.strictObject({ state: z.literal('logged') }),
+  z.strictObject({
+    state: z.literal('switching'),
+    bank: bankSchema.optional(),
+    control: settings.optional(),
+    loadPowerFactor: z.strictObject({ min: plain(POWER_FACTOR), max: plain(POWER_FACTOR) }).optional(),
+  }),
+  z.strictObject({ state: z.literal('unknown') }),
+]);
+
+const control = settings.extend({
   currentTransformer: currentTransformerSchema.optional(),
   generator: generatorRuleSchema.optional(),
 });

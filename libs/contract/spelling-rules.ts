@@ -75,6 +75,7 @@ function ratioRules(site: Readable): RuleBreach[] {
 function reactorRules(site: Readable): RuleBreach[] {
   const lists: PropertyKey[][] = [
     ['bank', 'stages'],
+    ['recordedBank', 'bank', 'stages'],
     ['network', 'capacitors'],
   ];
   return lists.flatMap((list) =>

@@ -1,5 +1,6 @@
 import {
   awgAreaMm2,
+  type BankInput,
   CABLE_REACTANCE_OHM_PER_KM,
   type CableInput,
   conductorOhmPerKm,
@@ -8,6 +9,7 @@ import {
   faultLevelOfOhm,
   type MonthlyBill,
   type NetworkInput,
+  type RecordedBank,
   reactorPctOfTuned,
   type Site,
   type StageGroupInput,
@@ -18,7 +20,8 @@ import {
 import { partAt } from './rule-breach.js';
 import type { SiteGiven } from './site-schema.js';
 
-type GivenStage = NonNullable<SiteGiven['bank']>['stages'][number];
+type GivenBank = NonNullable<SiteGiven['bank']>;
+type GivenStage = GivenBank['stages'][number];
 type GivenNetwork = NonNullable<SiteGiven['network']>;
 
 /**
@@ -29,11 +32,10 @@ type GivenNetwork = NonNullable<SiteGiven['network']>;
  */
 export function understandSite(given: SiteGiven, json: unknown): Site {
   const said = new Said(given.frequencyHz);
-  const { bank, network, supply, estimate, ...rest } = given;
+  const { bank, network, supply, estimate, recordedBank, ...rest } = given;
   const site: Site = { ...rest, supply: said.supply(supply) };
-  if (bank !== undefined) {
-    site.bank = { ...bank, stages: bank.stages.map((stage, g) => said.stage(stage, `bank.stages[${g}]`)) };
-  }
+  if (bank !== undefined) site.bank = said.bank(bank, 'bank');
+  if (recordedBank !== undefined) site.recordedBank = said.recordedBank(recordedBank);
   if (network !== undefined) site.network = said.network(network, json);
   if (estimate !== undefined) site.estimate = said.estimate(estimate, json);
   if (said.list.length > 0) site.understood = said.list;
@@ -76,6 +78,16 @@ class Said {
       return this.#say(path, `${ohm} Ω at ${atKv} kV, the ${end}`, faultLevelOfOhm(ohm, atKv), 'MVA');
     });
     return min === undefined ? { max: max! } : { max: max!, min };
+  }
+
+  bank(given: GivenBank, path: string): BankInput {
+    return { ...given, stages: given.stages.map((stage, g) => this.stage(stage, `${path}.stages[${g}]`)) };
+  }
+
+  recordedBank(given: NonNullable<SiteGiven['recordedBank']>): RecordedBank {
+    if (given.state !== 'switching') return given;
+    const { bank, ...rest } = given;
+    return bank === undefined ? rest : { ...rest, bank: this.bank(bank, 'recordedBank.bank') };
   }
 
   stage<T extends GivenStage>(given: T, path: string): Omit<T, 'tunedHz' | 'tunedOrderH'> & StageGroupInput {

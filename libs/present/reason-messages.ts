@@ -78,6 +78,28 @@ export const REASON_MESSAGES: Messages = {
     text: 'Whether a bank was working while the record was taken is unknown, so the load’s own kvar are not known.',
     consequence: 'Find out, and give it as the recorded bank.',
   },
+  'recordedBank.turnedBack': {
+    level: 'to be noted',
+    text:
+      'The record was taken with a bank switching. What it gave is certain in {certainPct} of the intervals; by what its ' +
+      'controller can have done in the others the greatest need lies between {maxNeedLowKvar} and {maxNeedHighKvar}.',
+    consequence:
+      'Log the bank’s stages beside the meter for a week, or state the load’s own power factor, to narrow it.',
+  },
+  'recordedBank.rangeDivides': {
+    level: 'to be accepted',
+    text:
+      'Whether the target of {targetPowerFactor} is met depends on what the old bank gave: it is met at the {metAt} of the ' +
+      'range alone.',
+    consequence: 'Take a record with the old bank out or logged before the bank is ordered.',
+  },
+  'recordedBank.unexplained': {
+    level: 'to be accepted',
+    text:
+      'In {unexplained:interval|intervals} of {intervals} the record shows what the old bank, with its nameplate and ' +
+      'settings, would not have left.',
+    consequence: 'Look at its settings, at the kvar its stages still give, and at the record’s length of interval.',
+  },
   'record.short': {
     level: 'to be accepted',
     text: 'The record covers {days:day|days}: a season, a shutdown or a busy month may be missing from it.',

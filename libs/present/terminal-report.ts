@@ -17,12 +17,12 @@ import { plainName } from './plain-name.js';
 import { estimateWords, proposedWords } from './proposed-words.js';
 import { gradeWords, MONTH_HEADS, monthCells, type QualityStated, qualityRows } from './quality-words.js';
 import { remarkConsequence, remarkSentence } from './remark-words.js';
+import { HISTORY_HEADS, historyRows } from './stage-history-words.js';
 import { spareWaysLines } from './spare-ways-lines.js';
-import { finished, tableLines } from './terminal-lines.js';
+import { finished, tableLines, wrapped } from './terminal-lines.js';
 import { countDuties, NO_PERMISSION, verdictWords } from './verdict-words.js';
 
 const LABEL_WIDTH = 26;
-const LINE_WIDTH = 96;
 
 /**
  * The answer of `plan` or `assess` for a terminal.
@@ -60,6 +60,7 @@ export function resultReport(outcome: Outcome): string {
     ...spareRows(outcome),
     ...dutyLines(outcome),
     ...deviceLines(outcome),
+    ...measuredLines(outcome),
     ...reasonLines(outcome),
     ...questionLines(result.record),
   ];
@@ -249,6 +250,11 @@ function deviceLines(outcome: BankOutcome): string[] {
   ];
 }
 
+function measuredLines({ result }: BankOutcome): string[] {
+  const { measured } = result.ageing;
+  return measured.length === 0 ? [] : [...tableLines([...HISTORY_HEADS], historyRows(measured)), ''];
+}
+
 function reasonLines({ result }: BankOutcome): string[] {
   return result.reasons.flatMap((reason) => {
     const consequence = remarkConsequence(reason);
@@ -263,16 +269,4 @@ function lowestOf(values: readonly (number | null)[]): number | null {
 
 function row(label: string, text: string): string {
   return `${label.padEnd(LABEL_WIDTH)}${text}`;
-}
-
-function wrapped(text: string, indent: string): string[] {
-  const lines: string[] = [];
-  let line = '';
-  for (const word of text.split(' ')) {
-    if (line !== '' && line.length + 1 + word.length > LINE_WIDTH) {
-      lines.push(line);
-      line = `${indent}${word}`;
-    } else line = line === '' ? word : `${line} ${word}`;
-  }
-  return [...lines, line];
 }

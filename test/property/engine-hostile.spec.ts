@@ -192,10 +192,40 @@ describe('refusals', () => {
       'recordedBank.state',
     ],
     [
-      'a switching old bank',
-      { bank: { stages: [tuned] }, recordedBank: { state: 'switching' } },
-      'not-supported-yet',
-      'recordedBank.state',
+      'a measurement of a stage the group does not have',
+      {
+        bank: { stages: [{ ...tuned, measurements: [{ stage: 9, date: '2025-01-01', lineA: [9, 9, 9], busV: 400 }] }] },
+      },
+      'inconsistent',
+      'bank.stages[0].measurements[0].stage',
+    ],
+    [
+      'a measurement before the stage was there',
+      {
+        bank: {
+          stages: [
+            {
+              ...tuned,
+              commissioned: '2020-01-01',
+              measurements: [{ stage: 1, date: '2019-01-01', lineA: [9, 9, 9], busV: 400 }],
+            },
+          ],
+        },
+      },
+      'inconsistent',
+      'bank.stages[0].measurements[0].date',
+    ],
+    [
+      'a switching old bank of too many combinations',
+      {
+        bank: { stages: [tuned] },
+        recordedBank: {
+          state: 'switching',
+          bank: { stages: Array.from({ length: 13 }, (_, k) => ({ count: 1, ratedKvar: 10 + k, ratedV: 400 })) },
+        },
+      },
+      'too-many-levels',
+      'recordedBank.bank',
     ],
     ['metering left open', { bank: { stages: [tuned] }, meteredAt: undefined as never }, 'missing', 'meteredAt'],
     [

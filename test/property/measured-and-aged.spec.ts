@@ -91,6 +91,36 @@ describe('ageing', () => {
     expect(aged.capacitanceFactor).toBeCloseTo(0.7, 12);
   });
 
+  it('takes what was measured of each stage over the years, and the end of life of a stage that was not', () => {
+    const [first, second] = BANK.stages as [BankInput['stages'][0], BankInput['stages'][0]];
+    // I = U/(√3·(X_C/left − X_L)) with X_C = U_N²/Q_N, as a clamp meter reads it on a stage with that much left.
+    const amps = (left: number): number => 400 / (Math.sqrt(3) * (480 ** 2 / 50_000) * (1 / left - 0.07));
+    const reading = (stage: number, date: string, left: number) => {
+      const lineA: [number, number, number] = [amps(left), amps(left), amps(left)];
+      return { stage, date, busV: 400, lineA };
+    };
+    const judged = (measurements: ReturnType<typeof reading>[]) =>
+      assessedSite({
+        asOf: '2026-01-31',
+        bank: { stages: [first, { ...second, commissioned: '2016-01-01', measurements }], installed: true },
+      }).ageing;
+    const some = judged([reading(2, '2020-01-01', 0.95), reading(2, '2024-01-01', 0.91)]);
+    expect(some.cases[2]).toMatchObject({ from: 'installed', capacitanceFactor: 0.8 });
+    const [history] = some.measured;
+    expect(history).toMatchObject({ group: 1, stage: 2, rateFrom: 'measurements' });
+    // 4 % in the 1 461 days between.
+    expect(history!.lossPctPerYear).toBeCloseTo(1, 9);
+    expect(history!.points.map(({ ratedKvar }) => ratedKvar)).toEqual([
+      expect.closeTo(47.5, 9),
+      expect.closeTo(45.5, 9),
+    ]);
+    const low = judged([reading(3, '2024-01-01', 0.72)]);
+    expect(low.cases[2]).toMatchObject({ from: 'measured', capacitanceFactor: expect.closeTo(0.72, 12) });
+    expect(low.measured[0]).toMatchObject({ rateFrom: 'nameplate', lossPctPerYear: expect.closeTo(28 / 8, 2) });
+    const whole = judged([1, 2, 3].map((stage) => reading(stage, '2024-01-01', 0.97 - 0.01 * stage)));
+    expect(whole.cases[2]).toMatchObject({ from: 'measured', capacitanceFactor: expect.closeTo(0.94, 12) });
+  });
+
   it('leaves the verdict alone: it stands beside the corners, not among them', () => {
     const { installed, ...result } = { installed: assessedSite({ bank: { ...BANK, installed: true } }), ...plain };
     expect(installed.verdict).toBe(result.verdict);
@@ -111,6 +141,33 @@ describe('ageing', () => {
     expect(verdictAt(comesOutPct! + 0.05)).toBe('clear');
     expect(verdictAt(comesOutPct! - 0.05)).toBe('worse');
     expect(comesOutUf! / plain.charge.stages[1]!.capacitanceUf).toBeCloseTo(comesOutPct! / 100, 12);
+  });
+
+  // Second method: the same bank written out and assessed whole. At order 4.6 next to nothing flows, so that only a peak of
+  // |Z| near it can speak against a stage whose tuned order has moved up towards it.
+  it('of one stage alone is judged whole: a peak that comes near an order present is seen', () => {
+    const [first, second] = BANK.stages as [BankInput['stages'][0], BankInput['stages'][0]];
+    const orders = [
+      { orderH: 4.6, pct: 0.01 },
+      { orderH: 11, pct: 4 },
+    ];
+    const loads = { distorting: [{ name: 'drives', fundamentalA: 100, orders }], backgroundPct: [] };
+    for (const [pct, verdict] of [
+      [90, 'clear'],
+      [70, 'watch'],
+    ] as const) {
+      const measuredUf = (plain.charge.stages[1]!.capacitanceUf * pct) / 100;
+      const bank = { stages: [first, { ...second, measuredUf }], interStageUh: 2 };
+      const left = { ...second, count: 1, ratedKvar: (second.ratedKvar * pct) / 100, reactorPct: (7 * pct) / 100 };
+      const written = assessedSite({
+        loads,
+        bank: { stages: [first, { ...second, count: 2 }, left], interStageUh: 2 },
+      });
+      expect(written.verdict).toBe(verdict);
+      expect(reasonCodes(written).includes('peak.near')).toBe(verdict === 'watch');
+      expect(written.duties.every((duty) => duty.verdict === 'clear' || duty.verdict === null)).toBe(true);
+      expect(assessedSite({ loads, bank }).ageing.cases[2]!.verdict, `${pct} %`).toBe(verdict);
+    }
   });
 
   it('tells of a stage that was measured below that', () => {

@@ -7,7 +7,6 @@ import { Revision } from '#libs/store/revision.js';
 import { Store } from '#libs/store/store.js';
 import { ContractPipe } from '../contract-pipe.js';
 import { showJob } from '../jobs/show-job.js';
-import { pathNumber } from '../path-number.js';
 import { type Actor, actorOf, CurrentActor, LOCAL_ACTOR } from '../people/actor.js';
 import { Needs } from '../people/needs.js';
 import { findSite } from '../sites/find-site.js';

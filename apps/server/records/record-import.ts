@@ -122,6 +122,16 @@ export class RecordImport {
     return manager.findOneByOrFail(StoredRecord, { id });
   }
 
+  /** Stores what was read, in a write of its own. */
+  keep(read: ReadRecord): Promise<StoredRecord> {
+    return this.store.write((manager) => this.insert(manager, read));
+  }
+
+  /** A record that was stored. */
+  stored(id: string): Promise<StoredRecord> {
+    return this.store.read((manager) => manager.findOneByOrFail(StoredRecord, { id }));
+  }
+
   /** Kept answers of the site’s organisation that were made for a file with the same header; never taken unasked. */
   async offeredFor(siteId: string, header: string | null): Promise<Pick<KeptMap, 'id' | 'name'>[]> {
     if (header === null) return [];

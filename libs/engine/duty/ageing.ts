@@ -1,11 +1,12 @@
-import type { Bank, BankInput, StageGroup } from '../layout/bank.js';
+import type { Bank, BankInput, StageGroupInput } from '../layout/bank.js';
 import { bankLevels } from '../layout/levels.js';
 import { deltaCapacitanceUf, tunedOrderH } from '../layout/stage.js';
 import type { NetworkModel } from '../network/network-model.js';
 import { InputProblem } from '../problem.js';
 import { type JudgeBasis, judgeBank } from './judge-bank.js';
-import { quickJudge } from './quick-judge.js';
+import { firmVerdict, quickJudge } from './quick-judge.js';
 import { graver, type Verdict } from './rules.js';
+import { agedGroup, lastFactors, type StageHistory, stageHistories } from './stage-history.js';
 
 /** A bank with capacitors that have lost some of their capacitance, judged beside the corners. */
 export interface AgedCase {
@@ -35,6 +36,8 @@ export interface StageEnd {
 export interface Ageing {
   cases: AgedCase[];
   stages: StageEnd[];
+  /** what was measured, stage by stage; empty for a new bank */
+  measured: StageHistory[];
 }
 
 /** End of life as a share of the nameplate's capacitance; common practice. */
@@ -53,32 +56,75 @@ const FACTOR_WIDTH = 1e-4;
  * @param model the network without the bank
  * @param bank the bank
  * @param basis what it is judged by
- * @param given the bank of the site file, which says whether it is installed and what was measured; null for a new one
- * @returns cases and the end of each group's stages; none for an empty bank
+ * @param given the bank of the site file, which says whether it is installed and what was measured, and the day of the
+ *   judgement; null for a new one
+ * @returns cases, the end of each group's stages, and what was measured; none for an empty bank
+ * @throws InputProblem naming every measurement that can't be
  * @source method-ageing
  */
-export function ageing(model: NetworkModel, bank: Bank, basis: JudgeBasis, given: BankInput | null): Ageing {
-  if (bank.groups.length === 0) return { cases: [], stages: [] };
-  const { frequencyHz } = basis;
-  const from = given?.installed === true ? 'installed' : 'new';
-  const all = aged(bank, null, END_OF_LIFE[from]);
-  const levels = bankLevels(all, basis.voltages.nominalV);
+export function ageing(
+  model: NetworkModel,
+  bank: Bank,
+  basis: JudgeBasis,
+  given: { bank: BankInput; asOf: string | null } | null,
+): Ageing {
+  if (bank.groups.length === 0) return { cases: [], stages: [], measured: [] };
+  const { frequencyHz, voltages } = basis;
+  const place = { nominalV: voltages.nominalV, frequencyHz, asOf: given?.asOf ?? null };
+  const measured = given === null ? [] : stageHistories(given.bank, bank, place);
+  const from = given?.bank.installed === true ? 'installed' : 'new';
+  const left = bank.groups.map((group, g) => {
+    const nameplateUf = deltaCapacitanceUf(group, frequencyHz);
+    return leastLeft({ stage: given?.bank.stages[g] ?? null, factors: lastFactors(measured, g) }, from, nameplateUf);
+  });
+  const all = allAged(bank, left, from);
+  const levels = bankLevels(all.bank, voltages.nominalV);
   const cases: AgedCase[] = [
     {
-      ...described(all, null, { frequencyHz, factor: END_OF_LIFE[from], from }),
-      verdict: judgeBank(model, all, levels, basis).verdict,
+      ...described(all.bank, null, { frequencyHz, factor: all.factor, from: all.from }),
+      verdict: judgeBank(model, all.bank, levels, basis).verdict,
     },
   ];
-  const verdictOf = (one: Bank): Verdict | null => flowsVerdict(model, one, basis);
-  for (const [g, group] of bank.groups.entries()) {
-    const measuredUf = given?.stages[g]?.measuredUf;
-    const nameplateUf = deltaCapacitanceUf(group, frequencyHz);
-    const factor = measuredUf === undefined ? END_OF_LIFE[from] : measuredUf / nameplateUf;
+  for (const [g, { factor, from: how }] of left.entries()) {
     const alone = aged(bank, g, factor);
-    const how = measuredUf === undefined ? from : 'measured';
-    cases.push({ ...described(alone, g, { frequencyHz, factor, from: how }), verdict: verdictOf(alone) });
+    const verdict = ofStages(() => firmVerdict(model, alone, basis).verdict);
+    cases.push({ ...described(alone, g, { frequencyHz, factor, from: how }), verdict });
   }
-  return { cases, stages: bank.groups.map((_, g) => stageEnd(bank, g, { frequencyHz, verdictOf })) };
+  // The search for a stage's end asks too often to look for peaks of |Z| as well.
+  const verdictOf = (one: Bank): Verdict | null => ofStages(() => quickJudge(model, one, basis).verdict);
+  return { cases, stages: bank.groups.map((_, g) => stageEnd(bank, g, { frequencyHz, verdictOf })), measured };
+}
+
+/** Capacitance left, and how it was come by. */
+interface Left {
+  factor: number;
+  from: AgedCase['from'];
+}
+
+// The least of a group: what was measured, and the end of life for stages of an installed bank that were not.
+function leastLeft(
+  { stage, factors }: { stage: StageGroupInput | null; factors: ReadonlyMap<number, number> },
+  from: 'new' | 'installed',
+  nameplateUf: number,
+): Left {
+  const measured = [...factors.values()];
+  if (stage?.measuredUf !== undefined) measured.push(stage.measuredUf / nameplateUf);
+  const whole = stage?.measuredUf !== undefined || (stage !== null && factors.size >= stage.count);
+  const least = Math.min(...measured);
+  const unmeasured = END_OF_LIFE[from];
+  if (measured.length > 0 && (whole || least < unmeasured)) return { factor: least, from: 'measured' };
+  return { factor: unmeasured, from };
+}
+
+// With every group measured all stages are taken as they measure; else at the end of life.
+function allAged(bank: Bank, left: readonly Left[], from: 'new' | 'installed'): Left & { bank: Bank } {
+  if (left.some((one) => one.from !== 'measured')) {
+    const factor = END_OF_LIFE[from];
+    return { bank: aged(bank, null, factor), factor, from };
+  }
+  const groups = bank.groups.map((group, g) => agedGroup(group, left[g]!.factor));
+  const kvar = (of: Bank['groups']): number => of.reduce((sum, group) => sum + group.count * group.ratedKvar, 0);
+  return { bank: { ...bank, groups }, factor: kvar(groups) / kvar(bank.groups), from: 'measured' };
 }
 
 function described(
@@ -108,22 +154,17 @@ function described(
  * @source derived: X_C = 1/(ωC), p = X_L/X_C
  */
 export function aged(bank: Bank, group: number | null, factor: number): Bank {
-  const less = (of: StageGroup): StageGroup => ({
-    ...of,
-    ratedKvar: of.ratedKvar * factor,
-    reactorPct: of.reactorPct * factor,
-  });
-  if (group === null) return { ...bank, groups: bank.groups.map(less) };
+  if (group === null) return { ...bank, groups: bank.groups.map((of) => agedGroup(of, factor)) };
   const rest = bank.groups.flatMap((of, g) =>
     g !== group ? [of] : of.count > 1 ? [{ ...of, count: of.count - 1 }] : [],
   );
-  return { ...bank, groups: [...rest, { ...less(bank.groups[group]!), count: 1 }] };
+  return { ...bank, groups: [...rest, { ...agedGroup(bank.groups[group]!, factor), count: 1 }] };
 }
 
-// Flows of every level and corner; a peak near an order present is looked for in the case of all stages alone.
-function flowsVerdict(model: NetworkModel, bank: Bank, basis: JudgeBasis): Verdict | null {
+// An aged stage is a group of its own, and may make too many combinations.
+function ofStages(judged: () => Verdict): Verdict | null {
   try {
-    return quickJudge(model, bank, basis).verdict;
+    return judged();
   } catch (error) {
     if (error instanceof InputProblem && error.code === 'too-many-levels') return null;
     throw error;

@@ -1,3 +1,25 @@
+/** Three like values, of lines 1, 2, 3 or between terminals 1–2, 2–3, 3–1. */
+export type Three = [number, number, number];
+
+/** One stage measured on the site: its three line currents in service, or three capacitances with the stage isolated. */
+export interface StageMeasurementInput {
+  /** number of the stage within its group, from 1 */
+  stage: number;
+  /** local date "2026-01-31" */
+  date: string;
+  /** bus voltage, line to line, while the currents were read [V] */
+  busV?: number;
+  /** mains frequency while the currents were read; the site's where absent [Hz] */
+  frequencyHz?: number;
+  /** currents of the three lines, rms [A] */
+  lineA?: Three;
+  /** between terminals 1–2, 2–3, 3–1 of the capacitor, the third one open [µF] */
+  terminalUf?: Three;
+  /** how the capacitor's elements are connected; the bank's where absent */
+  connection?: 'delta' | 'star' | 'earthedStar';
+  instrument?: string;
+}
+
 /** A group of equal stages as the site file gives it. */
 export interface StageGroupInput {
   count: number;
@@ -29,6 +51,10 @@ export interface StageGroupInput {
   fuseA?: number;
   /** capacitance of one delta phase as measured on the installed stage, the least of the group [µF] */
   measuredUf?: number;
+  /** when the group was put into service, local date "2026-01-31" */
+  commissioned?: string;
+  /** its stages as measured over the years */
+  measurements?: StageMeasurementInput[];
 }
 
 /** The device that feeds the bank, as fitted. */

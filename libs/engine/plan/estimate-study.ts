@@ -35,9 +35,10 @@ export function studyEstimate(site: Site, zone: ZoneTable): EstimateStudy {
       { code: 'missing', path: 'estimate', expected: 'bills or an equipment list', found: 'nothing' },
     ]);
   }
-  if (site.recordedBank?.state === 'logged') {
-    const expected = '"none", "out", "fixed" or "unknown": bills have no column of connected kvar';
-    throw new InputProblem([{ code: 'inconsistent', path: 'recordedBank.state', expected, found: '"logged"' }]);
+  const state = site.recordedBank?.state;
+  if (state === 'logged' || state === 'switching') {
+    const expected = '"none", "out", "fixed" or "unknown": bills don’t show what was connected when';
+    throw new InputProblem([{ code: 'inconsistent', path: 'recordedBank.state', expected, found: `"${state}"` }]);
   }
   const { site: settled, assumptions } = settleSite(site, null);
   const metering = meteringOf(settled);

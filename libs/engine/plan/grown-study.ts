@@ -28,7 +28,8 @@ export function grownStudy(study: Study, factor: number): Study {
   return { ...study, load, record: { ...scaled, ...meter } };
 }
 
-function oldBankKvar({ site, record }: Study): Float64Array {
+function oldBankKvar({ site, record, turned }: Study): Float64Array {
+  if (turned !== null) return turned.turned.kvar;
   const { recordedBank } = site;
   if (recordedBank.state === 'logged' && record.connectedKvar !== null) return record.connectedKvar;
   return new Float64Array(record.beginS.length).fill(recordedBank.state === 'fixed' ? recordedBank.kvar : 0);

@@ -70,7 +70,7 @@ function besideOf(
   const beside = {
     limits: limitsPoint(model, site),
     devices: equipment?.rows ?? [],
-    ageing: ageing(model, bank, judge, facts.bank),
+    ageing: ageing(model, bank, judge, facts.bank === null ? null : { bank: facts.bank, asOf: site.asOf }),
     measured: facts.measured === null ? null : measuredOf(judged, kind, bank, facts.measured),
   };
   return { beside, equipment };

@@ -12,6 +12,7 @@ import type { Outcome } from './outcome.js';
 import { reasons } from './reasons.js';
 import { copyNote, pointAssumption, reasonsBeside, verdictBeside } from './reasons-beside.js';
 import type { Result } from './result.js';
+import { rangeOf } from './turned-range.js';
 import { type Operated, operate, type Study } from './study.js';
 import type { WaysWeighed } from './weighed-bank.js';
 
@@ -49,8 +50,10 @@ export function outcomeOf(kind: Outcome['kind'], study: Study, choice: Choice): 
   const operated = choice.operated ?? operate(study, bank, control);
   const judged = judgeWhole(choice.isOwn === true ? 'assess' : kind, study, choice);
   const { levels, judgement, beside, equipment } = judged;
+  const range = rangeOf(study, choice);
   const result: Result = {
     record: study.recordSummary,
+    recordedBank: range.summary,
     requirement: study.requirement,
     bank: judged.summary,
     control,
@@ -65,12 +68,13 @@ export function outcomeOf(kind: Outcome['kind'], study: Study, choice: Choice): 
     reactorTrials: [],
     spareWays: [],
     money: choice.money?.(operated) ?? null,
-    verdict: [said.atBest ?? 'clear', supported(study), verdictBeside(beside)].reduce(
+    verdict: [said.atBest ?? 'clear', supported(study), range.atBest, verdictBeside(beside)].reduce(
       graver,
       overallVerdict(study, judgement),
     ),
     reasons: [
       ...said.reasons,
+      ...range.reasons,
       ...reasons(study, bank, operated, judgement),
       ...reasonsBeside(study, bank, { control, duties: judgement.duties }, beside),
     ],

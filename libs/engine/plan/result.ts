@@ -16,6 +16,7 @@ import type { RecordSummary } from '../record/record-summary.js';
 import type { RequirementSummary } from '../requirement/requirement.js';
 import type { Figure } from './figure.js';
 import type { ReactorTrial } from './reactor-choice.js';
+import type { RecordedBankSummary } from './recorded-bank.js';
 import type { Robustness } from './robustness.js';
 import type { SpareWays } from './spare-ways.js';
 
@@ -52,6 +53,8 @@ export interface BankResult {
 /** The answer of `plan` and `assess` from a meter's record. */
 export interface Result extends BankResult {
   record: RecordSummary;
+  /** the old bank that was switching while the record was taken, with its range; null where none was */
+  recordedBank: RecordedBankSummary | null;
   requirement: RequirementSummary;
   operation: OperationSummary;
   /** null without a tariff */

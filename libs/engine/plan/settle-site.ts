@@ -146,12 +146,12 @@ function contradictions(site: Site): Problem[] {
       found: '"separate"',
     });
   }
-  if (site.recordedBank?.state === 'switching') {
+  if (site.recordedBank?.state === 'switching' && (site.recordedBank.bank ?? site.bank) === undefined) {
     problems.push({
-      code: 'not-supported-yet',
-      path: 'recordedBank.state',
-      expected: '"none", "out", "fixed", "logged" or "unknown"',
-      found: '"switching"',
+      code: 'missing',
+      path: 'recordedBank.bank',
+      expected: 'the bank that was switching, here or as the site’s bank',
+      found: 'nothing',
     });
   }
   return problems;

@@ -16,7 +16,15 @@ export type RecordedBank =
   | { state: 'out' }
   | { state: 'fixed'; kvar: number }
   | { state: 'logged' }
-  | { state: 'switching' }
+  | {
+      state: 'switching';
+      /** the bank that was switching; the site's own where absent */
+      bank?: BankInput;
+      /** its controller's settings; the site's own where absent */
+      control?: Partial<Control>;
+      /** the load's own power factor, without the bank, lies between these, as is known or was measured */
+      loadPowerFactor?: { min: number; max: number };
+    }
   | { state: 'unknown' };
 
 /** A value that stood in the site file in another form. */
