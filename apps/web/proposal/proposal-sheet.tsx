@@ -1,6 +1,6 @@
 import { formatQuantity, inShownMark } from '#libs/present/format-number.js';
 import { NO_PERMISSION } from '#libs/present/verdict-words.js';
-import type { RevisionHeadShown } from '../api/shown.js';
+import type { RevisionHeadShown, RevisionShown } from '../api/shown.js';
 import { isChanged, staleFrom } from '../desk/desk-state.js';
 import { useDesk } from '../desk/use-desk.js';
 import { ScrollTable } from '../draw/scroll-table.js';
@@ -8,11 +8,12 @@ import { VerdictWords } from '../draw/verdict-mark.js';
 import { valueAt } from '../field/document-path.js';
 import { Headline } from '../working/headline.js';
 import { FindingsList } from './findings-list.js';
+import { ReviewState } from './review-state.js';
 
 /** The paper: preview, download, what changed since the last one. */
 export function ProposalSheet() {
   const { desk, state } = useDesk();
-  const { kept, revisions, records, job, saving } = state;
+  const { kept, records, job, saving } = state;
   const canPlan = records.length > 0 || valueAt(state.document, 'estimate') !== undefined;
   if (kept === null) {
     return (
@@ -37,6 +38,13 @@ export function ProposalSheet() {
       </>
     );
   }
+  return <KeptPaper kept={kept} />;
+}
+
+/** The paper of the latest revision, its review, its findings, and every revision before it. */
+function KeptPaper({ kept }: { kept: RevisionShown }) {
+  const { state } = useDesk();
+  const { revisions, review } = state;
   const { number, revision, proposed, verdict, links } = kept;
   const isOlder = isChanged(state) || staleFrom(state) !== null;
   return (
@@ -44,7 +52,7 @@ export function ProposalSheet() {
       <Headline
         figures={[
           { value: kept.result.bank.effectiveKvar, unit: 'kvar', under: 'effective', id: 'bank.effectiveKvar' },
-          { value: revision, under: 'revision, draft', digits: 'given' },
+          { value: revision, under: `revision, ${review?.stateText ?? 'kept'}`, digits: 'given' },
         ]}
       >
         {kept.kind === 'plan' ? 'Proposed' : 'Judged'}: {inShownMark(proposed)}
@@ -56,7 +64,8 @@ export function ProposalSheet() {
       ) : null}
       <section className="section" aria-labelledby="paper">
         <h2 id="paper">
-          Proposal {number}, revision {revision}: draft, not reviewed
+          Proposal {number}, revision {revision}
+          {review === null ? '' : `: ${review.stateText}`}
         </h2>
         <p className="row gap">
           <VerdictWords verdict={verdict} />
@@ -76,6 +85,7 @@ export function ProposalSheet() {
           title={`Proposal ${number}, revision ${revision}`}
         />
       </section>
+      {review === null ? null : <ReviewState kept={kept} review={review} />}
       <FindingsList />
       <Changes revisions={revisions} />
       <section className="section" aria-labelledby="papers">
