@@ -19,6 +19,7 @@ export const STAGES = [
   'duty',
   'money',
   'plan',
+  'reevaluation',
 ];
 
 const DOOR = 'libs/engine/index.ts';
@@ -28,6 +29,9 @@ const LIBS = ['engine', 'contract', 'meter-files', 'present', 'review', 'proposa
 
 /** The part of libs/jobs that needs no database: worker threads over the engine alone. */
 const POOL = /^libs\/jobs\/pool([./-]|$)/;
+
+/** The one command that is asked about an installation, and reads its database. */
+const VERIFY = 'apps/cli/verify.ts';
 
 /** @type {Record<string, string[]>} */
 export const MAY_IMPORT = {
@@ -138,6 +142,7 @@ function mayReach(module, target) {
   if (other === module.home) return true;
   if (module.spec) return specMayImport(other);
   if (module.home === 'apps/cli' && POOL.test(target)) return true;
+  if (module.path === VERIFY && other === 'libs/store') return true;
   return MAY_IMPORT[module.home]?.includes(other) ?? false;
 }
 

@@ -21,12 +21,13 @@ import { putEstimateInWords, putInWords } from '#libs/present/put-in-words.js';
 import { estimateReport, resultReport } from '#libs/present/terminal-report.js';
 import type { CommandLine } from './command.js';
 import { usage } from './command-line.js';
-import { readJson } from './input-file.js';
 import { readMeterRecord } from './meter-record.js';
 import { say, write, writeJson } from './output.js';
 import { type PaperSheet, paperSheet } from './paper-sheet.js';
+import { planExports } from './plan-exports.js';
 import { proposalTarget } from './proposal-target.js';
 import { inFile } from './refused-file.js';
+import { readSiteDocument } from './site-document.js';
 
 /** The engine's two functions of one command: from a meter's record, and from the site's own estimate. */
 interface Judges {
@@ -55,7 +56,8 @@ export async function judgeSite(line: CommandLine, kind: Outcome['kind'], judges
   const pdf = line.values.get('pdf');
   const sheet = await paperSheet(line);
   const target = pdf === undefined ? null : await proposalTarget(pdf);
-  const given = await inFile(line.operand, async () => readSiteWithMathjs(await readJson(line.operand)));
+  const exports = await planExports(line);
+  const given = await inFile(line.operand, async () => readSiteWithMathjs(await readSiteDocument(line.operand)));
   const site = frozenSite(given, Date.now() / 1000);
   if (load === undefined && site.estimate === undefined) {
     throw new InputProblem([usage('--load METER-FILE, or a site file with an estimate', 'none')]);
@@ -71,6 +73,7 @@ export async function judgeSite(line: CommandLine, kind: Outcome['kind'], judges
     await target.write(await proposalOf(told, sheet));
     say(`proposal written to ${pdf}`);
   }
+  for (const path of await exports.write(told.outcome)) say(`written: ${path}`);
   const { result } = told.outcome;
   if (line.flags.has('json')) await writeJson(result);
   else await write(told.report);

@@ -1,7 +1,7 @@
 import type { FastifyInstance, FastifyRequest } from 'fastify';
 import { RefusedRequest } from './refused-request.js';
 
-const UPLOADS = /\/records(\/:recordId\/revisions)?$|^\/api\/verify$/;
+const UPLOADS = /\/records(\/:recordId\/revisions)?$|^\/api\/(verify|site-imports)$/;
 /** Pages that work without scripts send forms; nothing else takes them. */
 const FORMS = /^\/(sign-in|sign-out|people|account)(\/|$)/;
 const FORM_TYPE = 'application/x-www-form-urlencoded';

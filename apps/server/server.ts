@@ -12,6 +12,8 @@ import { Store } from '#libs/store/store.js';
 import { type Registered, refuseUndeclared, routesOf } from './declared-routes.js';
 import { DemoController } from './demo/demo-controller.js';
 import { loadDemo } from './demo/load-demo.js';
+import { ExportsController } from './exports/exports-controller.js';
+import { SiteImportsController } from './exports/site-imports-controller.js';
 import { HealthController } from './health/health-controller.js';
 import { HomeController } from './home/home-controller.js';
 import { JobsController } from './jobs/jobs-controller.js';
@@ -80,6 +82,8 @@ const CONTROLLERS: ServerParts['controllers'] = [
   DifferencesController,
   VerifyController,
   KeptMapsController,
+  ExportsController,
+  SiteImportsController,
   JobsController,
   SessionController,
   PeopleController,

@@ -3,7 +3,7 @@ import { INK, SOFT, STROKE } from './ink.js';
 import { LABEL, leading, NOTE, type Paper, rise } from './paper.js';
 import type { PrintedReview } from './printed-review.js';
 import type { ProposalFrame } from './proposal-frame.js';
-import { BODY, type Style } from './typesetter.js';
+import { BODY, type Piece, type Style } from './typesetter.js';
 
 const ROLES: [string, string, string][] = [
   ['prepared', 'planner', 'date'],
@@ -46,7 +46,7 @@ function drawPlaces(paper: Paper, frame: ProposalFrame): void {
   paper.y = top + drop + HEIGHT - 6;
 }
 
-/** Each signature with its own statement, then what was accepted and why. */
+/** Each signature with its own statement, and what was worked out by hand. */
 function drawSigned(paper: Paper, review: PrintedReview, preparedBy: string | null): void {
   if (preparedBy !== null) paper.paragraph([{ text: 'Prepared by ', ink: SOFT }, preparedBy], { after: 4 });
   if (review.ownApproval !== null) {
@@ -57,28 +57,27 @@ function drawSigned(paper: Paper, review: PrintedReview, preparedBy: string | nu
     paper.rule({ width: STROKE.load, ink: INK });
     paper.y += 5;
     const who = `${name}, ${licence}, ${jurisdiction}, ${formatDate(date)}`;
-    paper.paragraph(
-      [
-        { text: `In the capacity of ${capacity}: `, ink: SOFT },
-        { text: who, weight: 'semibold' },
-      ],
-      {
-        after: 2,
-      },
-    );
+    const signed: Piece[] = [
+      { text: `In the capacity of ${capacity}: `, ink: SOFT },
+      { text: who, weight: 'semibold' },
+    ];
+    paper.paragraph(signed, { after: 2 });
     paper.paragraph([statement], { style: NOTE, after: 7 });
   }
-  for (const { what, reason, by, date } of review.accepted) {
-    paper.paragraph(
-      [
-        { text: `Accepted by ${by}, ${formatDate(date)}: `, ink: SOFT },
-        `${what} `,
-        { text: 'Reason: ', ink: SOFT },
-        reason,
-      ],
-      {
-        after: 3,
-      },
-    );
+  if (review.handChecks.length > 0) {
+    paper.paragraph([{ text: 'Checked by hand: ', ink: SOFT }, `${review.handChecks.join('; ')}.`], { after: 4 });
+  }
+}
+
+/** What the reviewer took on, each finding by itself with the reason; stands behind the findings. */
+export function drawAccepted(paper: Paper, { review }: ProposalFrame): void {
+  for (const { what, reason, by, date } of review?.accepted ?? []) {
+    const accepted: Piece[] = [
+      { text: `Accepted by ${by}, ${formatDate(date)}: `, ink: SOFT },
+      `${what} `,
+      { text: 'Reason: ', ink: SOFT },
+      reason,
+    ];
+    paper.paragraph(accepted, { after: 4 });
   }
 }

@@ -50,17 +50,13 @@ select option { background: var(--sheet); }
 .shown-once { border-left: 5px solid var(--ink); padding: 4px 12px; overflow-wrap: anywhere; }
 .links { list-style: none; padding: 0; display: flex; flex-wrap: wrap; gap: 4px 24px; }
 .links a { padding: 9px 0; }
-form { margin: 12px 0; max-width: 640px; }
+form[data-act], form[id] { max-width: 640px; }
 form label { display: block; margin: 8px 0; }
 form label span { display: block; font-size: 13px; line-height: 18px; color: var(--soft); }
-input:not([type=checkbox]), textarea, select { font: inherit; color: inherit; background: transparent; width: 100%; min-height: 32px;
-  border: 0; border-bottom: 1.5px solid var(--ink); border-radius: 0; padding: 4px 0; }
-textarea { min-height: 52px; }
-input[type=checkbox] { width: 24px; height: 24px; vertical-align: middle; accent-color: var(--ink); }
-input:focus-visible, textarea:focus-visible, select:focus-visible, button:focus-visible, summary:focus-visible { outline: 3px solid var(--ink); outline-offset: 3px; }
-button { font: inherit; color: inherit; background: transparent; border: 1.5px solid var(--ink); padding: 5px 16px; min-height: 32px; cursor: pointer; }
-button.main { background: var(--ink); color: var(--sheet); }
-.fields { display: grid; grid-template-columns: repeat(auto-fit, minmax(90px, 1fr)); gap: 0 16px; }
+textarea { font: inherit; color: inherit; background: none; border: 0; border-bottom: 1px solid var(--soft); width: 100%; min-height: 52px; }
+input[type=checkbox] { width: 24px; height: 24px; min-height: 24px; vertical-align: middle; accent-color: var(--ink); }
+textarea:focus-visible, summary:focus-visible { outline: 3px solid var(--ink); outline-offset: 3px; }
+.fields { display: grid; grid-template-columns: repeat(auto-fit, minmax(90px, 1fr)); gap: 0 16px; align-items: end; }
 fieldset { border: 0; border-top: 1px solid var(--hair); margin: 12px 0; padding: 8px 0; }
 legend { padding: 0 8px 0 0; font-weight: 600; }
 .level { font-size: 13px; font-weight: 600; padding: 1px 6px; border: 2px solid var(--ink); }
@@ -70,7 +66,9 @@ legend { padding: 0 8px 0 0; font-weight: 600; }
 [role=alert]:empty, [role=status]:empty { display: none; }
 [role=alert] { color: var(--avoid); font-weight: 600; }
 summary { cursor: pointer; min-height: 24px; padding: 4px 0; }
-.wide { max-width: none; table-layout: fixed; }
+.wide { max-width: none; }
+ol { padding-left: 32px; }
+li { overflow-wrap: anywhere; }
 .wide td, .wide th { text-align: left; overflow-wrap: anywhere; vertical-align: top; }
 footer { padding-bottom: 32px; }
 @media (max-width: 719px) { header, main, footer { padding-left: 14px; padding-right: 14px; } h1 { font-size: 21px; line-height: 26px; } }

@@ -10,6 +10,9 @@ export interface FormPlace {
   version: number;
 }
 
+/** The one filled button of a page: what it is there for. */
+const MAIN_ACTS = ['submit', 'approve'];
+
 /**
  * A form that sends one act.
  * @param place of the review
@@ -20,7 +23,7 @@ export interface FormPlace {
 export function actForm({ base, version }: FormPlace, act: string, button: string, fields: Html | Html[]): Html {
   return html`<form data-act="${base}/${act}" data-seen="&quot;${version}&quot;">
 ${fields}
-<p role="alert"></p><button>${button}</button></form>`;
+<p role="alert"></p><button class="${MAIN_ACTS.includes(act) ? '' : 'quiet'}">${button}</button></form>`;
 }
 
 /** A field for a line of text. */

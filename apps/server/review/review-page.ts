@@ -32,7 +32,7 @@ export function reviewPage(view: ReviewView): string {
     logPart(view),
   ];
   const main = html`<h1>${name} is ${shown.stateText}</h1>
-<p>${siteName}. ${revision.proposed}</p>${parts}`;
+<p>${siteName}. ${revision.kind === 'plan' ? 'Proposed' : 'Judged'}: ${revision.proposed}</p>${parts}`;
   return framedPage({ title: `${name} – Varwright`, main, footer: ways(view), script: '/review.js' });
 }
 
@@ -67,7 +67,7 @@ function findingsPart(view: ReviewView): Html | null {
         ? null
         : html`<p>Accepted by ${acceptance.by.name}, ${acceptance.at.slice(0, 10)}: ${acceptance.reason}</p>`;
     const form =
-      acceptance !== null || blocks || state !== 'forReview'
+      acceptance !== null || blocks || state !== 'forReview' || isBarred(view)
         ? null
         : actForm(place(view), 'findings', 'Accept this finding', [
             html`<input type="hidden" name="finding" value="${id}">`,
@@ -90,7 +90,7 @@ function figuresPart(view: ReviewView): Html | null {
     ({ id, label, unit }) => html`<option value="${id}">${label}${unit === '' ? '' : `, ${unit}`}</option>`,
   );
   const form =
-    state === 'forReview'
+    state === 'forReview' && !isBarred(view)
       ? actForm(place(view), 'hand-checks', 'Compare', [
           html`<label><span>Figure</span><select name="figure">${options}</select></label>`,
           numberField('Worked out by hand', 'value'),
@@ -148,21 +148,29 @@ function nextPart(view: ReviewView): Html | null {
 
 function reviewerForms(view: ReviewView): (Html | null)[] {
   const { ownApproval } = view.shown;
-  const isOwn = hasPrepared(view.shown, view.viewer);
-  const leave = actForm(place(view), 'own-approval', 'Allow it', textField('Reason', 'reason', { long: true }));
+  const returned = actForm(place(view), 'return', 'Return', textField('Reason', 'reason', { long: true }));
+  const back = details('Return with a reason', returned);
+  if (isBarred(view)) {
+    const leave = actForm(place(view), 'own-approval', 'Allow it', textField('Reason', 'reason', { long: true }));
+    return [
+      html`<p>You prepared this plan; another must approve it.</p>`,
+      details('Allow whoever prepared it to approve it (administrator)', leave),
+      back,
+    ];
+  }
   const password = html`<label><span>Password, where you have one</span><input type="password" name="password" autocomplete="current-password"></label>`;
   return [
-    isOwn && ownApproval === null ? html`<p>You prepared this plan; another must approve it.</p>` : null,
-    isOwn && ownApproval === null ? details('Allow whoever prepared it to approve it (administrator)', leave) : null,
     ownApproval === null
       ? null
       : html`<p>Whoever prepared it may approve it, by leave of ${ownApproval.by.name}: ${ownApproval.reason}</p>`,
     actForm(place(view), 'approve', 'Approve', [signatureFields('checking'), password]),
-    details(
-      'Return with a reason',
-      actForm(place(view), 'return', 'Return', textField('Reason', 'reason', { long: true })),
-    ),
+    back,
   ];
+}
+
+/** Who prepared a plan neither accepts its findings nor checks or approves it, unless that was allowed. */
+function isBarred({ shown, viewer }: ReviewView): boolean {
+  return shown.ownApproval === null && hasPrepared(shown, viewer);
 }
 
 function supersedeForm(view: ReviewView): Html {
@@ -190,15 +198,14 @@ function installedPart(view: ReviewView): Html | null {
 }
 
 function logPart({ shown }: ReviewView): Html {
-  const rows = shown.log.map(
+  const lines = shown.log.map(
     ({ sequence, at, by, text, hash }) =>
-      html`<tr><td>${sequence}</td><td>${at.replace('T', ' ').slice(0, 16)}</td><td>${by.name} (${by.role})</td><td>${text}</td><td><code>${hash.slice(0, 16)}</code></td></tr>`,
+      html`<li value="${sequence}"><span class="soft">${at.replace('T', ' ').slice(0, 16)}, ${by.name} (${by.role}):</span> ${text} <code class="soft">${hash.slice(0, 16)}</code></li>`,
   );
-  return section(
-    'log',
-    'Log',
-    html`<table class="wide"><caption>Times are UTC. Each line’s hash covers the one before it.</caption><thead><tr><th scope="col">line</th><th scope="col">when</th><th scope="col">who</th><th scope="col">what</th><th scope="col">hash</th></tr></thead><tbody>${rows}</tbody></table>`,
-  );
+  return section('log', 'Log', [
+    html`<p class="soft">Times are UTC. Each line’s hash covers the one before it.</p>`,
+    html`<ol>${lines}</ol>`,
+  ]);
 }
 
 function ways({ shown, revision }: ReviewView): Html {

@@ -15,7 +15,7 @@ import { Store } from '#libs/store/store.js';
 import type { StoredSite } from '#libs/store/stored-site.js';
 import type { Actor } from '../people/actor.js';
 import type { Confirm } from '../people/confirm.js';
-import { frameOf } from '../planning/frame-of.js';
+import { frameOf, sheetOfRevision } from '../planning/frame-of.js';
 import { CONFIRM } from '../tokens.js';
 import { personOf } from './person-of.js';
 import { printedReview } from './printed-review.js';
@@ -106,7 +106,7 @@ export class Reviews {
 
   /** @throws Error where the same inputs and engine give another result: our fault, and nothing to put a name to */
   async #print(revision: Revision, approved: Review): Promise<Uint8Array> {
-    const draft = await frameOf(this.store, revision);
+    const draft = { ...(await frameOf(this.store, revision)), ...(await sheetOfRevision(this.store, revision)) };
     const preparedBy = draft.preparedBy ?? approved.preparers.map(({ name }) => name).join(', ');
     const frame = { ...draft, state: 'approved' as const, preparedBy, review: printedReview(approved) };
     const bench = { store: this.store, pool: this.pool };

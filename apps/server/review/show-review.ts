@@ -1,5 +1,8 @@
 import { actWords, handCheckWords, openWords, STATE_WORDS, stalenessWords } from '#libs/present/review-words.js';
+import type { Result } from '#libs/engine/index.js';
+import { installedBank } from '#libs/review/installed-bank.js';
 import type { Staleness } from '#libs/review/refusals.js';
+import type { Review } from '#libs/review/review.js';
 import type { AuditEntry } from '#libs/store/audit-entry.js';
 import { eventOf } from '#libs/store/audit-log.js';
 import type { VersionedReview } from '#libs/store/reviews.js';
@@ -29,6 +32,8 @@ export function showReview({ review, version }: VersionedReview, { revision, ent
       const { sequence, previousHash, hash } = entry;
       return { sequence, at, by, act: act.act, text: actWords(act), previousHash, hash };
     }),
+    /** the site file's bank by the latest record "as installed", for the bank to be judged again */
+    installedBank: installedOf(review, revision),
     links: {
       self: `${self}/review`,
       revision: self,
@@ -36,4 +41,11 @@ export function showReview({ review, version }: VersionedReview, { revision, ent
       approved: isIssued ? `${self}/approved.pdf` : null,
     },
   };
+}
+
+function installedOf({ commissioning }: Review, { result }: Revision) {
+  const latest = commissioning.at(-1);
+  if (latest === undefined) return null;
+  const { bank } = JSON.parse(result) as Pick<Result, 'bank'>;
+  return installedBank(bank.stages, latest.record);
 }

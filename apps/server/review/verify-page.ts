@@ -10,7 +10,7 @@ export function verifyPage(): string {
 <p id="answer" role="status"></p></section>
 <section aria-labelledby="scan"><h2 id="scan">A scan or a print</h2>
 <p>Type the number behind “content” at the head of its pages. It names the plan; compare what the sheet shows with it.</p>
-<form id="number"><label><span>Content number</span><input name="number" autocomplete="off" spellcheck="false" maxlength="100"></label><button>Look it up</button></form>
+<form id="number"><label><span>Content number</span><input name="number" autocomplete="off" spellcheck="false" maxlength="100"></label><button class="quiet">Look it up</button></form>
 <p id="found" role="status"></p></section>
 <noscript><p>This page needs scripts. The command <code>varwright verify FILE</code> does the same without.</p></noscript>`;
   return framedPage({ title: 'Verify a paper – Varwright', main, script: '/verify.js' });

@@ -151,10 +151,13 @@ export function summarizeOperation(
 
 function shortfallColumn(meter: MeterAfter, target: Target): Float64Array {
   const tan = tanFromPowerFactor(target.powerFactor);
-  return Float64Array.from(meter.activeKw, (kw, i) => {
-    const net = meter.laggingKvar[i]! - meter.leadingKvar[i]!;
-    return Math.max(0, net - targetKw(kw, target.onExport) * tan);
-  });
+  const { activeKw, laggingKvar, leadingKvar } = meter;
+  const shortfallKvar = new Float64Array(activeKw.length);
+  for (let i = 0; i < shortfallKvar.length; i++) {
+    const net = laggingKvar[i]! - leadingKvar[i]!;
+    shortfallKvar[i] = Math.max(0, net - targetKw(activeKw[i]!, target.onExport) * tan);
+  }
+  return shortfallKvar;
 }
 
 function worstIntervals(simulated: Simulated, shortfallKvar: Float64Array): WorstInterval[] {

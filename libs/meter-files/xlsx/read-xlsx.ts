@@ -62,7 +62,8 @@ async function attemptAt(open: OpenWorkbook, sheet: Worksheet, onRead: (bytes: n
   }
 }
 
-async function contextOf(archive: ZipArchive, { strings, styles, since1904 }: Workbook) {
+/** What the cells of a workbook are read by: its shared texts and the styles of its numbers. */
+export async function contextOf(archive: ZipArchive, { strings, styles, since1904 }: Workbook) {
   const shared = new SharedStrings(strings ?? '');
   const formats = new CellStyles(styles ?? '');
   if (strings !== null) await readXml(strings, archive.part(strings), shared);
