@@ -1,5 +1,6 @@
 import { formatQuantity, inShownMark } from '#libs/present/format-number.js';
 import { NO_PERMISSION } from '#libs/present/verdict-words.js';
+import { STATE_WORDS } from '#libs/present/review-words.js';
 import type { RevisionHeadShown } from '../api/shown.js';
 import { isChanged, staleFrom } from '../desk/desk-state.js';
 import { useDesk } from '../desk/use-desk.js';
@@ -44,7 +45,7 @@ export function ProposalSheet() {
       <Headline
         figures={[
           { value: kept.result.bank.effectiveKvar, unit: 'kvar', under: 'effective', id: 'bank.effectiveKvar' },
-          { value: revision, under: 'revision, draft', digits: 'given' },
+          { value: revision, under: `revision, ${stateOf(revisions, revision)}`, digits: 'given' },
         ]}
       >
         {kept.kind === 'plan' ? 'Proposed' : 'Judged'}: {inShownMark(proposed)}
@@ -56,7 +57,7 @@ export function ProposalSheet() {
       ) : null}
       <section className="section" aria-labelledby="paper">
         <h2 id="paper">
-          Proposal {number}, revision {revision}: draft, not reviewed
+          Proposal {number}, revision {revision}: {stateOf(revisions, revision)}
         </h2>
         <p className="row gap">
           <VerdictWords verdict={verdict} />
@@ -69,6 +70,7 @@ export function ProposalSheet() {
           <a href={links.proposal} target="_blank" rel="noreferrer">
             Open it beside this page
           </a>
+          <a href={reviewOf(kept)}>Review and approval</a>
         </p>
         <iframe
           className="paper no-print"
@@ -86,12 +88,22 @@ export function ProposalSheet() {
   );
 }
 
+/** Where a revision stands in its review, in words. */
+function stateOf(revisions: readonly RevisionHeadShown[], revision: number): string {
+  return STATE_WORDS[revisions.find((one) => one.revision === revision)?.state ?? 'draft'];
+}
+
+/** The page of a revision's review. */
+function reviewOf({ siteId, revision }: Pick<RevisionHeadShown, 'siteId' | 'revision'>): string {
+  return `/sites/${siteId}/revisions/${revision}/review`;
+}
+
 function Revisions({ revisions }: { revisions: readonly RevisionHeadShown[] }) {
   return (
     <ScrollTable name="Revisions">
       <thead>
         <tr>
-          {['revision', 'made', 'what', 'verdict', 'paper'].map((head) => (
+          {['revision', 'made', 'what', 'verdict', 'review', 'paper'].map((head) => (
             <th key={head} scope="col">
               {head}
             </th>
@@ -108,6 +120,9 @@ function Revisions({ revisions }: { revisions: readonly RevisionHeadShown[] }) {
             </td>
             <td>
               <VerdictWords verdict={one.verdict} />
+            </td>
+            <td>
+              <a href={reviewOf(one)}>{STATE_WORDS[one.state ?? 'draft']}</a>
             </td>
             <td>
               <a href={one.links.proposal}>PDF</a>
