@@ -1,32 +1,49 @@
-/** A field of the site that is not what it was. */
+/** A field of the site that is not what it was; a part that came or went is one change. */
 export interface InputChange {
   path: string;
   /** null where it was not given */
-  before: string | number | boolean | null;
-  after: string | number | boolean | null;
+  before: Plain;
+  after: Plain;
 }
+
+type Plain = string | number | boolean | null;
 
 /**
  * Fields in which two sites differ, by their path; the date of asking is left out.
  * @param before earlier site
  * @param after later site
- * @returns changed fields in the order of their paths; none where nothing differs
+ * @returns changed fields in the order they stand in; none where nothing differs
  */
 export function inputChanges(before: object, after: object): InputChange[] {
-  const [old, now] = [new Map<string, Plain>(), new Map<string, Plain>()];
-  fieldsInto(old, before, '');
-  fieldsInto(now, after, '');
-  return [...new Set([...old.keys(), ...now.keys()])]
-    .filter((path) => path !== 'asOf' && old.get(path) !== now.get(path))
-    .map((path) => ({ path, before: old.get(path) ?? null, after: now.get(path) ?? null }));
+  return changesIn(before, after, '').filter(({ path }) => path !== 'asOf');
 }
 
-type Plain = string | number | boolean | null;
+function changesIn(before: unknown, after: unknown, path: string): InputChange[] {
+  if (!isPart(before) || !isPart(after)) {
+    const [was, is] = [plainOf(before), plainOf(after)];
+    return was === is ? [] : [{ path, before: was, after: is }];
+  }
+  const list = Array.isArray(before) || Array.isArray(after);
+  const keys = [...new Set([...Object.keys(before), ...Object.keys(after)])];
+  return keys.flatMap((key) => {
+    const place = list ? `${path}[${key}]` : path === '' ? key : `${path}.${key}`;
+    return changesIn(before[key], after[key], place);
+  });
+}
 
-function fieldsInto(fields: Map<string, Plain>, value: unknown, path: string): void {
+function isPart(value: unknown): value is Record<string, unknown> {
+  return typeof value === 'object' && value !== null;
+}
+
+// A whole part reads as its fields.
+function plainOf(value: unknown): Plain {
+  if (value === undefined || value === null) return null;
+  if (!isPart(value)) return value as string | number | boolean;
   if (Array.isArray(value)) {
-    for (const [k, entry] of value.entries()) fieldsInto(fields, entry, `${path}[${k}]`);
-  } else if (typeof value === 'object' && value !== null) {
-    for (const [key, entry] of Object.entries(value)) fieldsInto(fields, entry, path === '' ? key : `${path}.${key}`);
-  } else if (value !== undefined) fields.set(path, value as Plain);
+    return value.some(isPart) ? `${value.length} ${value.length === 1 ? 'entry' : 'entries'}` : value.join('; ');
+  }
+  return Object.entries(value)
+    .filter(([, entry]) => entry !== undefined)
+    .map(([key, entry]) => `${key} ${plainOf(entry)}`)
+    .join(', ');
 }

@@ -1,4 +1,4 @@
-import type { BankInput, StageGroupInput } from '../layout/bank.js';
+import type { Bank, BankInput, StageGroupInput } from '../layout/bank.js';
 import { COMMON_CATALOGUE } from '../layout/candidates.js';
 import { MOST_VECTORS } from '../layout/levels.js';
 import { effectiveKvar, nameplateKvar } from '../layout/stage.js';
@@ -11,12 +11,12 @@ import { keptBank, type StagesOut } from './stages-out.js';
 import { type Ground, type StagesVerdict, type WeighedStages, weighStages } from './weigh-stages.js';
 
 /** Ways to mend an installed bank; where prices don't decide, in this order. */
-export const REMEDY_KINDS = ['setPoint', 'remove', 'replace', 'restore', 'add', 'detune'] as const;
+export const REMEDY_KINDS = ['setPoint', 'remove', 'replace', 'restore', 'renew', 'add', 'detune'] as const;
 
 /** One way to mend a bank, with its figures. */
 export interface Remedy extends WeighedStages {
   kind: (typeof REMEDY_KINDS)[number];
-  /** stages touched: out, replaced, put back, added, detuned; 0 for a set point */
+  /** stages touched: out, replaced, put back, added, new with reactors; 0 for a set point */
   stages: number;
   /** nameplate of a stage that is bought, and reactor ratio of a detuned bank; null where nothing is */
   ratedKvar: number | null;
@@ -55,8 +55,8 @@ const PARTS: readonly string[] = ['capacitors', 'stages', 'reactors', 'switches'
 
 /**
  * What would mend a bank, each way by itself, weighed by the same engine: another set point, stages left out, measured
- * stages replaced, lost ones put back, more of a kind, reactors. Those that mend it first, then the cheapest, then in the
- * order of `REMEDY_KINDS`.
+ * stages replaced, lost ones put back, more of a kind, reactors. Those that mend it first, then those over no limit,
+ * then those that meet the target; among equals the cheapest, then in the order of `REMEDY_KINDS`.
  * @param basis the bank as it stands, and what it was
  * @returns ways, the best first
  * @source method-reevaluation
@@ -71,8 +71,14 @@ export function remedies(basis: RemedyBasis): Remedy[] {
     ...detuneRemedies(basis),
   ];
   const rank = (one: Remedy): number => REMEDY_KINDS.indexOf(one.kind);
+  const over = (one: Remedy): number => Number(one.verdict === 'avoid');
   return found.sort(
-    (a, b) => Number(b.mends) - Number(a.mends) || (a.capital ?? 0) - (b.capital ?? 0) || rank(a) - rank(b),
+    (a, b) =>
+      Number(b.mends) - Number(a.mends) ||
+      over(a) - over(b) ||
+      Number(b.meetsTarget) - Number(a.meetsTarget) ||
+      (a.capital ?? 0) - (b.capital ?? 0) ||
+      rank(a) - rank(b),
   );
 }
 
@@ -141,8 +147,7 @@ function replaceRemedies(basis: RemedyBasis): Remedy[] {
   for (let count = 1; count <= lost.length; count++) {
     const replaced = new Set(lost.slice(0, count));
     const fresh = (k: number): StageGroupInput => {
-      const { measurements: _, commissioned: __, measuredUf: ___, ...stage } = nameplate.stages[measured.ofGroup[k]!]!;
-      return { ...stage, count: 1 };
+      return { ...plateOf(nameplate.stages[measured.ofGroup[k]!]!), count: 1 };
     };
     const stages = measured.site.bank.stages.map((stage, k) => (replaced.has(k) ? fresh(k) : stage));
     const [first] = lost;
@@ -168,12 +173,11 @@ function alike(stages: readonly StageGroupInput[]): StageGroupInput[] {
   return [...entries.values()];
 }
 
-// Stages the earlier bank had and this one has not.
+// Stages the earlier bank had and this one has not, alone and with the measured ones new.
 function restoreRemedy(basis: RemedyBasis): Remedy[] {
   const { earlier, measured, nameplate } = basis;
-  if (earlier === null) return [];
-  const missing = earlier.stages.flatMap((stage) => {
-    const { measurements: _, commissioned: __, measuredUf: ___, ...plate } = stage;
+  const missing = (earlier?.stages ?? []).flatMap((stage) => {
+    const plate = plateOf(stage);
     const same = nameplate.stages
       .filter((now) => now.ratedKvar === stage.ratedKvar && now.ratedV === stage.ratedV)
       .filter((now) => (now.reactorPct ?? 0) === (stage.reactorPct ?? 0));
@@ -182,10 +186,26 @@ function restoreRemedy(basis: RemedyBasis): Remedy[] {
   });
   if (missing.length === 0) return [];
   const [{ ratedKvar, ratedV, reactorPct }] = missing as [StageGroupInput];
-  const stages = missing.reduce((sum, { count }) => sum + count, 0);
-  const head: Head = { kind: 'restore', stages, ratedKvar, ratedV, reactorPct: reactorPct ?? 0 };
-  const bank = { ...measured.site.bank, stages: alike([...measured.site.bank.stages, ...missing]) };
-  return [remedyOf(basis, bank, head, { bought: missing })];
+  const lost = measured.site.bank.stages.flatMap((_, k) =>
+    measured.ofStage[k] !== null && measured.factor[k]! < WORTH_REPLACING
+      ? [{ ...plateOf(nameplate.stages[measured.ofGroup[k]!]!), count: 1 }]
+      : [],
+  );
+  const whole = nameplate.stages.map(plateOf);
+  const ways: { kind: 'restore' | 'renew'; kept: StageGroupInput[]; bought: StageGroupInput[] }[] = [
+    { kind: 'restore', kept: measured.site.bank.stages, bought: missing },
+    ...(lost.length === 0 ? [] : [{ kind: 'renew' as const, kept: whole, bought: [...missing, ...lost] }]),
+  ];
+  return ways.map(({ kind, kept, bought }) => {
+    const stages = bought.reduce((sum, { count }) => sum + count, 0);
+    const head: Head = { kind, stages, ratedKvar, ratedV, reactorPct: reactorPct ?? 0 };
+    return remedyOf(basis, { ...measured.site.bank, stages: alike([...kept, ...missing]) }, head, { bought });
+  });
+}
+
+function plateOf(stage: StageGroupInput): StageGroupInput {
+  const { measurements: _, commissioned: __, measuredUf: ___, ...plate } = stage;
+  return plate;
 }
 
 // More stages like those there are; of no use where the bank is over a limit as it stands, or meets its target.
@@ -193,7 +213,7 @@ function addRemedies(basis: RemedyBasis): Remedy[] {
   const { measured, nameplate, standing, ground } = basis;
   if (standing.verdict === 'avoid' || weighStages(ground, measured.site.bank, standing).meetsTarget) return [];
   return nameplate.stages.flatMap((stage) => {
-    const { measurements: _, commissioned: __, measuredUf: ___, ...plate } = stage;
+    const plate = plateOf(stage);
     let last: Remedy | null = null;
     for (let added = 1; added <= MOST_ADDED; added++) {
       const more = { ...plate, count: added };
@@ -217,28 +237,44 @@ function vectorsOf({ stages }: BankInput): number {
   return stages.reduce((product, { count, fixed }) => product * (fixed === true ? 1 : count + 1), 1);
 }
 
-// Every stage new with the reactor ratio that mends it first, its output at the bus kept.
+// Every stage new with the reactor ratio that mends it first, its output at the bus kept; with more of them where the
+// target asks for it.
 function detuneRemedies(basis: RemedyBasis): Remedy[] {
   const { ground, nameplate, standing } = basis;
   if (standing.verdict === 'clear') return [];
   const { bank } = settleBank(nameplate, ground.site.frequencyHz);
-  const { nominalV } = ground.study.site;
   const own = Math.min(...bank.groups.map(({ reactorPct }) => reactorPct));
   let last: Remedy | null = null;
   for (const reactorPct of TRIED_REACTOR_PCT.filter((pct) => pct > own + 0.1)) {
-    const ratedV = voltageFor(ground.study, reactorPct, COMMON_CATALOGUE.ratedV);
-    const stages = bank.groups.map((group) => {
-      const ratedKvar = nameplateKvar(effectiveKvar(group, nominalV), { ratedV, nominalV, reactorPct }, 'effective');
-      return { count: group.count, ratedKvar, ratedV, reactorPct, ...(group.fixed ? { fixed: true } : {}) };
-    });
-    const head: Head = {
-      kind: 'detune',
-      stages: stages.reduce((sum, { count }) => sum + count, 0),
-      ratedV,
-      reactorPct,
-    };
-    last = remedyOf(basis, { ...nameplate, stages: alike(stages) }, head, { bought: stages });
+    const tried = detuned(basis, bank, reactorPct, 0);
+    if (last === null || tried.verdict !== 'avoid') last = tried;
+    for (let added = 1; added <= MOST_ADDED && last === tried && missesTargetOnly(last); added++) {
+      const more = detuned(basis, bank, reactorPct, added);
+      if (more.mends) last = more;
+    }
     if (last.mends) break;
   }
   return last === null ? [] : [last];
+}
+
+function missesTargetOnly({ verdict, meetsTarget }: Remedy): boolean {
+  return verdict === 'clear' && !meetsTarget;
+}
+
+function detuned(basis: RemedyBasis, bank: Bank, reactorPct: number, added: number): Remedy {
+  const { ground, nameplate } = basis;
+  const { nominalV } = ground.study.site;
+  const ratedV = voltageFor(ground.study, reactorPct, COMMON_CATALOGUE.ratedV);
+  const output = bank.groups.map((group) => effectiveKvar(group, nominalV));
+  const largest = output.indexOf(Math.max(...output));
+  const stages = bank.groups.map((group, g) => ({
+    count: group.count + (g === largest ? added : 0),
+    ratedKvar: nameplateKvar(output[g]!, { ratedV, nominalV, reactorPct }, 'effective'),
+    ratedV,
+    reactorPct,
+    ...(group.fixed ? { fixed: true } : {}),
+  }));
+  const count = stages.reduce((sum, stage) => sum + stage.count, 0);
+  const head: Head = { kind: 'detune', stages: count, ratedV, reactorPct };
+  return remedyOf(basis, { ...nameplate, stages: alike(stages) }, head, { bought: stages });
 }
