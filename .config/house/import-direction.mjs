@@ -46,7 +46,7 @@ export const MAY_IMPORT = {
   migrations: ['libs/store'],
   'apps/server': [...LIBS, 'migrations'],
   'apps/cli': LIBS.filter((lib) => lib !== 'libs/store' && lib !== 'libs/jobs'),
-  'apps/web': ['libs/engine', 'libs/contract', 'libs/present'],
+  'apps/web': ['libs/engine', 'libs/contract', 'libs/present', 'libs/review'],
 };
 
 /**

@@ -1,7 +1,7 @@
-import type { EntityManager } from 'typeorm';
+import { type EntityManager, In } from 'typeorm';
 import { InputProblem } from '#libs/engine/index.js';
 import { type Attempt, refusals } from '#libs/review/refusals.js';
-import { afterEvent, newReview, type Review, reviewOf } from '#libs/review/review.js';
+import { afterEvent, newReview, type Review, type ReviewState, reviewOf } from '#libs/review/review.js';
 import { appendEvent, entriesOf, eventOf } from './audit-log.js';
 import { ReviewStanding } from './review-standing.js';
 import type { Revision } from './revision.js';
@@ -21,6 +21,15 @@ export async function readReview(manager: EntityManager, revisionId: string): Pr
   // A line written between the two reads belongs to the next version.
   const seen = entries.filter(({ sequence }) => sequence <= (standing?.lastSequence ?? 0));
   return { review: reviewOf(seen.map(eventOf)), version: standing?.version ?? 0 };
+}
+
+/** Where each of some revisions stands, by its id; one nobody has touched is missing. */
+export async function statesOf(
+  manager: EntityManager,
+  revisions: readonly Pick<Revision, 'id'>[],
+): Promise<Map<string, ReviewState>> {
+  const rows = await manager.findBy(ReviewStanding, { revisionId: In(revisions.map(({ id }) => id)) });
+  return new Map(rows.map(({ revisionId, state }) => [revisionId, state]));
 }
 
 /** An act as it is asked for: who, what, when, and the version they saw. */

@@ -3,6 +3,7 @@ import type { FastifyReply } from 'fastify';
 import { type PlanRequest, planRequestSchema } from '#libs/contract/plan-request-schema.js';
 import type { Jobs } from '#libs/jobs/jobs.js';
 import { ProposalFile } from '#libs/store/proposal-file.js';
+import { statesOf } from '#libs/store/reviews.js';
 import { Revision } from '#libs/store/revision.js';
 import { Store } from '#libs/store/store.js';
 import { ContractPipe } from '../contract-pipe.js';
@@ -60,7 +61,8 @@ export class PlanningController {
     const revisions = await this.store.read((manager) =>
       manager.find(Revision, { where: { siteId: id }, order: { revision: 'DESC' } }),
     );
-    return { revisions: revisions.map(revisionHead) };
+    const states = await this.store.read((manager) => statesOf(manager, revisions));
+    return { revisions: revisions.map((one) => ({ ...revisionHead(one), state: states.get(one.id) ?? 'draft' })) };
   }
 
   @Get('revisions/:revision')

@@ -2,6 +2,7 @@ import type { ProblemJson } from '#libs/contract/error-body.js';
 import type { MeterMap } from '#libs/contract/meter-map.js';
 import type { EstimateResult, RecordSummary, Remark, Result, Verdict } from '#libs/engine/index.js';
 import type { QualityStated } from '#libs/present/quality-words.js';
+import type { ReviewState } from '#libs/review/review.js';
 
 /** A site file as JSON: what was typed into it, units and all. */
 export type SiteDocument = Record<string, unknown> & { name: string; timeZone: string };
@@ -53,6 +54,8 @@ export interface RevisionHeadShown {
   recordId: string | null;
   engineVersion: string;
   contentHash: string;
+  /** of its review; absent where it has just been made */
+  state?: ReviewState;
   links: { self: string; proposal: string; record: string | null };
 }
 

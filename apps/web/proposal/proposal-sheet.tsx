@@ -1,4 +1,5 @@
 import { formatQuantity, inShownMark } from '#libs/present/format-number.js';
+import { STATE_WORDS } from '#libs/present/review-words.js';
 import { NO_PERMISSION } from '#libs/present/verdict-words.js';
 import type { RevisionHeadShown, RevisionShown } from '../api/shown.js';
 import { isChanged, staleFrom } from '../desk/desk-state.js';
@@ -78,6 +79,7 @@ function KeptPaper({ kept }: { kept: RevisionShown }) {
           <a href={links.proposal} target="_blank" rel="noreferrer">
             Open it beside this page
           </a>
+          <a href={reviewOf(kept)}>Review and approval</a>
         </p>
         <iframe
           className="paper no-print"
@@ -96,12 +98,17 @@ function KeptPaper({ kept }: { kept: RevisionShown }) {
   );
 }
 
+/** The page of a revision's review. */
+function reviewOf({ siteId, revision }: Pick<RevisionHeadShown, 'siteId' | 'revision'>): string {
+  return `/sites/${siteId}/revisions/${revision}/review`;
+}
+
 function Revisions({ revisions }: { revisions: readonly RevisionHeadShown[] }) {
   return (
     <ScrollTable name="Revisions">
       <thead>
         <tr>
-          {['revision', 'made', 'what', 'verdict', 'paper'].map((head) => (
+          {['revision', 'made', 'what', 'verdict', 'review', 'paper'].map((head) => (
             <th key={head} scope="col">
               {head}
             </th>
@@ -118,6 +125,9 @@ function Revisions({ revisions }: { revisions: readonly RevisionHeadShown[] }) {
             </td>
             <td>
               <VerdictWords verdict={one.verdict} />
+            </td>
+            <td>
+              <a href={reviewOf(one)}>{STATE_WORDS[one.state ?? 'draft']}</a>
             </td>
             <td>
               <a href={one.links.proposal}>PDF</a>
