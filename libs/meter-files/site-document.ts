@@ -1,9 +1,10 @@
 import { csvRows, csvText } from '#libs/contract/csv-text.js';
 import { areDocumentRows, DOCUMENT_HEADS, documentFromRows, documentRows } from '#libs/contract/document-rows.js';
 import { InputProblem } from '#libs/engine/index.js';
+import { isXlsx } from './format-starts.js';
 import type { TableForm } from './write-tables.js';
 import { readWorkbookRows } from './xlsx/read-workbook-rows.js';
-import { isXlsx } from './xlsx/read-xlsx.js';
+
 import { writeWorkbook } from './xlsx/write-workbook.js';
 
 /**
