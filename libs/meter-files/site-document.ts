@@ -4,7 +4,6 @@ import { InputProblem } from '#libs/engine/index.js';
 import { isXlsx } from './format-starts.js';
 import type { TableForm } from './write-tables.js';
 import { readWorkbookRows } from './xlsx/read-workbook-rows.js';
-
 import { writeWorkbook } from './xlsx/write-workbook.js';
 
 /**
