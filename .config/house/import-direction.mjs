@@ -19,6 +19,7 @@ export const STAGES = [
   'duty',
   'money',
   'plan',
+  'reevaluation',
 ];
 
 const DOOR = 'libs/engine/index.ts';

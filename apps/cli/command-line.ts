@@ -65,7 +65,7 @@ function operandProblems({ operand }: Command, operands: string[]): Problem[] {
 }
 
 function stdinProblems(operands: string[], { values, lists }: CommandLine): Problem[] {
-  const inputs = ['load', 'map', 'logo'].map((name) => values.get(name));
+  const inputs = ['load', 'map', 'logo', 'before', 'before-load'].map((name) => values.get(name));
   const named = [...operands, ...inputs, ...(lists.get('extend') ?? [])];
   const files = named.filter((file) => file === STDIN);
   const toStdin = ['pdf', 'netlist', 'export', 'calculation', 'figures', 'keep']

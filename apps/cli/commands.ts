@@ -50,11 +50,19 @@ export const COMMANDS: Record<string, Command> = {
   },
   assess: {
     operand: 'SITE',
-    values: { load: 'METER-FILE', pdf: 'OUT', ...SHEET_OPTIONS, ...EXPORT_OPTIONS, ...METER_OPTIONS },
+    values: {
+      ...{ load: 'METER-FILE', pdf: 'OUT', before: 'SITE', 'before-load': 'METER-FILE' },
+      ...SHEET_OPTIONS,
+      ...EXPORT_OPTIONS,
+      ...METER_OPTIONS,
+    },
     lists: METER_LISTS,
     flags: ['json'],
     does: "judge the site's own bank",
-    details: PLAN_DETAILS,
+    details: `${PLAN_DETAILS}  --before SITE      judge the bank again beside what it was: the site file of then. Says first what to keep out where a
+                     limit is passed, then what changed in numbers, what would mend it, and since when
+  --before-load FILE the meter's record of then; the same record where not given
+`,
     load: () => import('./assess.js'),
   },
   site: {

@@ -19,11 +19,10 @@ import { gradeWords, MONTH_HEADS, monthCells, type QualityStated, qualityRows } 
 import { remarkConsequence, remarkSentence } from './remark-words.js';
 import { HISTORY_HEADS, historyRows } from './stage-history-words.js';
 import { spareWaysLines } from './spare-ways-lines.js';
-import { finished, tableLines } from './terminal-lines.js';
+import { finished, tableLines, wrapped } from './terminal-lines.js';
 import { countDuties, NO_PERMISSION, verdictWords } from './verdict-words.js';
 
 const LABEL_WIDTH = 26;
-const LINE_WIDTH = 96;
 
 /**
  * The answer of `plan` or `assess` for a terminal.
@@ -270,16 +269,4 @@ function lowestOf(values: readonly (number | null)[]): number | null {
 
 function row(label: string, text: string): string {
   return `${label.padEnd(LABEL_WIDTH)}${text}`;
-}
-
-function wrapped(text: string, indent: string): string[] {
-  const lines: string[] = [];
-  let line = '';
-  for (const word of text.split(' ')) {
-    if (line !== '' && line.length + 1 + word.length > LINE_WIDTH) {
-      lines.push(line);
-      line = `${indent}${word}`;
-    } else line = line === '' ? word : `${line} ${word}`;
-  }
-  return [...lines, line];
 }

@@ -1,3 +1,4 @@
+import type { Reevaluation } from '#libs/engine/index.js';
 import type { RevisionNumbers } from '#libs/present/revision-numbers.js';
 import type { PaperSize } from './paper.js';
 import type { PrintedReview } from './printed-review.js';
@@ -39,4 +40,6 @@ export interface ProposalFrame {
   paper?: PaperSize;
   /** the site's logo, a PNG or JPEG file */
   logo?: Uint8Array | null;
+  /** where an installed bank was judged again */
+  reevaluation?: Reevaluation;
 }

@@ -19,6 +19,7 @@ import { drawMeasured } from './section-measured.js';
 import { drawMethod } from './section-method.js';
 import { drawMoney } from './section-money.js';
 import { drawNetwork } from './section-network.js';
+import { drawReevaluation } from './section-reevaluation.js';
 import { drawSensitivity } from './section-sensitivity.js';
 import { drawAccepted, drawSignatures } from './section-signatures.js';
 import { drawSiteActions } from './section-site-actions.js';
@@ -55,6 +56,7 @@ export async function renderProposal(outcome: Outcome | EstimateOutcome, frame: 
   const header = setHeader(paper, frame, outcome);
   paper.begin(header.contentTop);
   drawDecision(paper, outcome, logo);
+  drawReevaluation(paper, outcome, frame.reevaluation);
   drawSignatures(paper, frame);
   drawFindings(paper, outcome);
   drawAccepted(paper, frame);

@@ -4,10 +4,12 @@ import { formatMonth } from '#libs/present/local-stamp.js';
 import { bankOf } from '../desk/desk-state.js';
 import { useDesk } from '../desk/use-desk.js';
 import { Bars } from '../draw/bars.js';
+import { BeingDrawn } from '../draw/being-drawn.js';
 import { Plot } from '../draw/plot.js';
 import { latestResult } from '../line/latest-result.js';
 import { NoRecord } from '../record/no-record.js';
 import { Headline } from '../working/headline.js';
+import { CatalogueFields } from './catalogue-fields.js';
 import { ControlFields } from './control-fields.js';
 import { RatioTable } from './ratio-table.js';
 import { ReplayFigure } from './replay-figure.js';
@@ -44,6 +46,7 @@ export function BankSheet() {
                 ? `switchings; kept: ${formatNumber(kept.result.operation.totalSwitchings, 'whole')}`
                 : 'switchings',
             digits: 'whole',
+            id: 'operation.totalSwitchings',
           },
           {
             value: operation.shareInTargetPct,
@@ -52,6 +55,7 @@ export function BankSheet() {
               isTrial && kept.result.operation !== null
                 ? `in target; kept: ${formatQuantity(kept.result.operation.shareInTargetPct, '%')}`
                 : 'of the record in target',
+            id: 'operation.shareInTargetPct',
           },
         ]}
       >
@@ -63,7 +67,10 @@ export function BankSheet() {
       </div>
       <StageFields />
       <ControlFields />
-      {charts.bank === undefined ? null : (
+      <CatalogueFields />
+      {charts.bank === undefined ? (
+        <BeingDrawn />
+      ) : (
         <>
           <div className="split replay">
             <ReplayFigure replay={charts.bank.replay} />
@@ -125,6 +132,7 @@ function NoBank({ result }: { result: Result | null }) {
         </button>
         <span className="soft">Designed from the record and the supply, or stage by stage by hand.</span>
       </p>
+      <CatalogueFields />
     </>
   );
 }

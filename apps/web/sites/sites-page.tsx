@@ -1,4 +1,5 @@
 import { useCallback, useEffect, useState } from 'react';
+import { inShownMark } from '#libs/present/format-number.js';
 import { siteAddress } from '../address.js';
 import { ask, NoConnection, Refused } from '../api/ask.js';
 import type { SiteListed, SiteShown } from '../api/shown.js';
@@ -93,23 +94,29 @@ function useSites() {
 }
 
 function SiteRow({ site, onChange, onRemove }: { site: SiteListed; onChange: () => void; onRemove: () => void }) {
-  const duplicate = async () => {
+  const [failure, setFailure] = useState('');
+  /** Does it, and says where it could not be done. */
+  const said = (work: () => Promise<void>) => () => {
+    setFailure('');
+    work().catch((error) => setFailure(error instanceof NoConnection ? 'Not done: no connection.' : String(error)));
+  };
+  const duplicate = said(async () => {
     const { site: document } = (await ask<SiteShown>(`/api/sites/${site.id}`)).body;
     const name = document.name.replace(/ \(example\)$/, '');
     await ask('/api/sites', { method: 'POST', json: { ...document, name: `${name}, copy` } });
     onChange();
-  };
-  const exportFile = async () => {
+  });
+  const exportFile = said(async () => {
     const { site: document } = (await ask<SiteShown>(`/api/sites/${site.id}`)).body;
     saveText(`${plainFileName(site.name)}.json`, 'application/json', `${JSON.stringify(document, null, 2)}\n`);
-  };
+  });
   return (
     <li className="site-row">
       <div>
         <a className="title" href={siteAddress(site.id, site.latest === null ? 'record' : 'bank')}>
           {site.name}
         </a>
-        <p className="caption">{site.latest === null ? 'no plan yet' : site.latest.proposed}</p>
+        <p className="caption">{site.latest === null ? 'no plan yet' : inShownMark(site.latest.proposed)}</p>
       </div>
       <div>
         {site.latest === null ? null : <VerdictWords verdict={site.latest.verdict} />}
@@ -118,15 +125,16 @@ function SiteRow({ site, onChange, onRemove }: { site: SiteListed; onChange: () 
         </p>
       </div>
       <p className="row">
-        <button type="button" className="way" onClick={() => void duplicate()}>
+        <button type="button" className="way" onClick={duplicate}>
           Duplicate<span className="hidden"> {site.name}</span>
         </button>
-        <button type="button" className="way" onClick={() => void exportFile()}>
+        <button type="button" className="way" onClick={exportFile}>
           Export<span className="hidden"> {site.name}</span>
         </button>
         <button type="button" className="way" onClick={onRemove}>
           Delete<span className="hidden"> {site.name}</span>
         </button>
+        {failure === '' ? null : <span role="alert">{failure}</span>}
       </p>
     </li>
   );

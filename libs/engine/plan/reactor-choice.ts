@@ -57,8 +57,15 @@ export function reactorTrials(study: Judged, bank: Bank, control: Control, rated
   });
 }
 
-// Fundamental voltage alone with a twentieth to spare, as the layout's own rule has it.
-function voltageFor(study: Judged, reactorPct: number, ratedV: readonly number[]): number {
+/**
+ * Rated voltage of capacitors behind a reactor: the fundamental alone with a twentieth to spare, as the layout has it.
+ * @param study site and network
+ * @param reactorPct p [%]
+ * @param ratedV voltages to choose from, ascending [V]
+ * @returns the least listed voltage that will do, else the voltage needed [V]
+ * @source method-layout
+ */
+export function voltageFor(study: Judged, reactorPct: number, ratedV: readonly number[]): number {
   const { nominalV, highestV } = study.site;
   const rise = 1 / (1 - (1.1 * 1.03 * reactorPct) / 100);
   const needV = Math.max((nominalV * rise) / 0.95, (highestV * rise) / 1.1 / 0.95);

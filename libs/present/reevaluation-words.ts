@@ -1,0 +1,299 @@
+import type {
+  MeasuredEntry,
+  Reevaluation,
+  Remedy,
+  ResultChange,
+  SinceWhen,
+  StagesOut,
+  ToMend,
+  Verdict,
+} from '#libs/engine/index.js';
+import { deviceName } from './device-words.js';
+import { countWord } from './findings.js';
+import { formatNumber, formatQuantity } from './format-number.js';
+import { formatDate, formatMonth } from './local-stamp.js';
+import { plainName } from './plain-name.js';
+import { VERDICT_WORDS, verdictWords } from './verdict-words.js';
+
+const FIGURE_NAMES: Record<ResultChange['id'], string> = {
+  verdict: 'verdict',
+  'need.maxKvar': 'greatest need',
+  'need.p95Kvar': 'need passed in 5 % of the record',
+  'need.meanKvar': 'mean need',
+  'record.powerFactor': 'power factor as metered',
+  'record.maxKw': 'greatest demand',
+  'operation.lowestPowerFactor': 'lowest month with the bank',
+  'operation.monthsBelow': 'months below the target',
+  'operation.shareInTargetPct': 'intervals inside the target',
+  'operation.switchingsPerDay': 'switchings a day',
+  'money.billPerDay': 'bill a day, with the bank',
+  'money.savingPerYear': 'saving a year',
+  'bank.effectiveKvar': 'effective kvar of the bank',
+  'network.shortCircuitMva': 'fault level at the bus',
+  'network.shortCircuitMinMva': 'least fault level at the bus',
+  'network.voltageDistortionPct': 'voltage distortion, worst case',
+  'network.currentDistortionPct': 'current distortion, worst case',
+  duty: 'duty',
+};
+
+/** Heads of the table of changed figures. */
+export const CHANGE_HEADS = ['what', 'before', 'after', 'limit', 'verdict'] as const;
+
+/**
+ * Changed figures, one row each.
+ * @param reevaluation the bank judged again
+ * @param currency of money's figures, empty where there is none
+ * @returns cells, one a head
+ */
+export function changeRows({ changes }: Reevaluation, currency: string): string[][] {
+  return changes.map((change) => {
+    const unit = change.id.startsWith('money.') ? currency : change.unit;
+    const value = (of: number | Verdict | null): string =>
+      typeof of === 'string' ? VERDICT_WORDS[of] : formatQuantity(of, unit);
+    const moved = change.verdictBefore !== change.verdictAfter && change.verdictBefore !== null;
+    const judged = change.id !== 'duty' ? '–' : verdictWords(change.verdictAfter);
+    return [
+      nameOf(change),
+      value(change.before),
+      value(change.after),
+      formatQuantity(change.limit, change.unit, 'given'),
+      moved ? `${verdictWords(change.verdictBefore)}, now ${judged}` : judged,
+    ];
+  });
+}
+
+function nameOf({ id, name, group }: ResultChange): string {
+  if (name === null) return FIGURE_NAMES[id];
+  return group === null ? name : `${name}, group ${group + 1}`;
+}
+
+/**
+ * What to do tonight with a bank that is over a limit: which stages out, by whom, until when.
+ * @param reevaluation the bank judged again
+ * @returns sentences; none where the bank is over no limit
+ */
+export function tonightSentences({ tonight, stages }: Reevaluation): string[] {
+  if (tonight === null) return [];
+  const { within, nearLimits, until } = tonight;
+  const sentences = [
+    `Tonight: keep out ${stagesOutWords(within, stages)}. ${leftWords(within)}`,
+    'A qualified person switches them off, secures them against reconnection and waits out their discharge, as the ' +
+      'section of cautions says; the controller must not be able to connect them.',
+    `They stay out until ${listed(until.map(toMendWords))} ${until.length === 1 ? 'has' : 'have'} been mended and the bank has been judged again.`,
+  ];
+  if (nearLimits !== null) {
+    sentences.push(
+      `With ${stagesOutWords(nearLimits, stages)} out nothing is over a limit, though near one: a second best, to be ` +
+        'accepted by whoever answers for the installation.',
+    );
+  }
+  return sentences;
+}
+
+function leftWords({ keptKvar, verdict }: StagesOut): string {
+  if (keptKvar === 0) return 'No stage may stay in.';
+  return `With what is left, ${formatQuantity(keptKvar, 'kvar')}, every level is ${VERDICT_WORDS[verdict]} in every corner.`;
+}
+
+function stagesOutWords({ out, outKvar }: StagesOut, stages: readonly MeasuredEntry[]): string {
+  const parts = stages.flatMap((entry, k) => (out[k]! === 0 ? [] : [entryWords(entry, out[k]!)]));
+  return parts.length === 0 ? 'nothing' : `${listed(parts)} (${formatQuantity(outKvar, 'kvar')} at the bus)`;
+}
+
+function entryWords({ group, stage, count, ratedKvar }: MeasuredEntry, out: number): string {
+  const size = formatQuantity(ratedKvar, 'kvar');
+  if (stage !== null) return `stage ${stage} of group ${group + 1}, ${size} as it measures`;
+  return `${out === count && count > 1 ? 'all ' : ''}${countWord(out)} of group ${group + 1}, ${size} each`;
+}
+
+function toMendWords({ kind, name, group }: ToMend): string {
+  const words = kind === 'device' ? deviceName(name) : name;
+  return group === null ? words : `${words} of group ${group + 1}`;
+}
+
+/** Heads of the table of remedies. */
+export const REMEDY_HEADS = [
+  'what would mend it',
+  'verdict',
+  'lowest month',
+  'switchings a day',
+  'bill a day',
+  'parts',
+] as const;
+
+/**
+ * Ways to mend the bank, the best first.
+ * @param reevaluation the bank judged again
+ * @param currency of prices, empty where there is none
+ * @returns cells, one a head
+ */
+export function remedyRows({ remedies, stages }: Reevaluation, currency: string): string[][] {
+  return remedies.map((remedy) => [
+    `${remedyWords(remedy, stages)}${remedy.mends ? '' : ' (not enough by itself)'}`,
+    VERDICT_WORDS[remedy.verdict],
+    formatQuantity(remedy.lowestPowerFactor, ''),
+    formatNumber(remedy.switchingsPerDay),
+    formatQuantity(remedy.billPerDay, currency),
+    formatQuantity(remedy.capital, currency, 'whole'),
+  ]);
+}
+
+function remedyWords(remedy: Remedy, stages: readonly MeasuredEntry[]): string {
+  const setPoint = `set point ${formatNumber(remedy.setPointPowerFactor, 'given')}`;
+  const plate = [
+    `${formatQuantity(remedy.ratedKvar, 'kvar', 'given')} at ${formatQuantity(remedy.ratedV, 'V', 'given')}`,
+    remedy.reactorPct === 0 ? 'plain' : formatQuantity(remedy.reactorPct, '% reactors', 'given'),
+  ].join(', ');
+  const count = `${countWord(remedy.stages)} ${remedy.stages === 1 ? 'stage' : 'stages'}`;
+  switch (remedy.kind) {
+    case 'setPoint':
+      return `change the set point to ${formatNumber(remedy.setPointPowerFactor, 'given')}`;
+    case 'remove':
+      return `leave out ${listed(stages.flatMap((entry, k) => (remedy.out![k]! === 0 ? [] : [entryWords(entry, remedy.out![k]!)])))}; ${setPoint}`;
+    case 'replace':
+      return `replace ${count} by new ones of ${plate}; ${setPoint}`;
+    case 'restore':
+      return `put back ${count} of ${plate}; ${setPoint}`;
+    case 'renew':
+      return `put back what is gone and replace what has aged, ${count} of ${plate}; ${setPoint}`;
+    case 'add':
+      return `add ${count} of ${plate}; ${setPoint}`;
+    case 'detune':
+      return (
+        `detune: all ${count} new, ${formatQuantity(remedy.reactorPct, '% reactors', 'given')} and capacitors for ` +
+        `${formatQuantity(remedy.ratedV, 'V', 'given')}; ${setPoint}`
+      );
+  }
+}
+
+const SERIES_WORDS: Record<SinceWhen['changes'][number]['series'], string> = {
+  activeKw: 'The load’s mean kW a day',
+  needKvar: 'The kvar needed at the bus, mean of a day,',
+  shortKvar: 'The kvar at the meter beyond the target, mean of a day,',
+};
+
+/**
+ * Since when the bank no longer does what it should.
+ * @param reevaluation the bank judged again
+ * @returns sentences; none where nothing changed
+ */
+export function sinceSentences({ since }: Reevaluation): string[] {
+  if (since === null) return [];
+  const by = since.monthsBy === 'metered' ? 'as metered' : 'with the bank simulated';
+  const months =
+    since.firstMonthOut === null
+      ? `The last month meets the target, ${by}.`
+      : `Below the target since ${formatMonth(since.firstMonthOut)}, ${by}.`;
+  const changes = since.changes.map(({ series, unit, date, before, after, explained }) => {
+    const course = `from ${formatQuantity(before, unit)} to ${formatQuantity(after, unit)}`;
+    const share = `it explains ${formatQuantity(100 * explained, '%', 'whole')} of what the weekdays leave`;
+    return date === null
+      ? `${SERIES_WORDS[series]} drifted ${course} over the record, with no day to name; ${share}.`
+      : `${SERIES_WORDS[series]} went ${course} on ${formatDate(date)}; ${share}.`;
+  });
+  return [
+    months,
+    ...(changes.length === 0 ? ['No day stands out on which load, need or shortfall changed.'] : changes),
+  ];
+}
+
+/** Heads of the table of both records. */
+export const LIKE_HEADS = ['on like terms', 'before', 'after'] as const;
+
+/**
+ * Both records on like terms.
+ * @param reevaluation the bank judged again
+ * @returns cells, one a head; none where the record is the same
+ */
+export function likeRows({ records }: Reevaluation): string[][] {
+  if (records === null) return [];
+  const { sameHours, sameMonths } = records;
+  const row = (name: string, values: readonly (number | null)[], unit: string): string[] => [
+    name,
+    ...values.map((value) => formatQuantity(value, unit)),
+  ];
+  const of = (key: 'days' | 'activeKwhPerDay' | 'laggingKvarhPerDay' | 'leadingKvarhPerDay' | 'maxKw') =>
+    records.records.map((terms) => terms[key]);
+  return [
+    row('length of the record', of('days'), 'days'),
+    row('energy a day', of('activeKwhPerDay'), 'kWh'),
+    row('lagging a day', of('laggingKvarhPerDay'), 'kvarh'),
+    row('leading a day', of('leadingKvarhPerDay'), 'kvarh'),
+    row(
+      'power factor',
+      records.records.map(({ powerFactorLagging }) => powerFactorLagging),
+      '',
+    ),
+    row('greatest demand', of('maxKw'), 'kW'),
+    ...(sameHours === null
+      ? []
+      : [
+          row(
+            `mean over the ${formatNumber(sameHours.hours, 'whole')} hours of the week both have`,
+            sameHours.activeKw,
+            'kW',
+          ),
+          row('and reactive, net', sameHours.reactiveKvar, 'kvar'),
+        ]),
+    ...sameMonths.map(({ month, powerFactorLagging }) =>
+      row(`power factor in ${MONTHS[month - 1]}`, powerFactorLagging, ''),
+    ),
+  ];
+}
+
+const MONTHS = [
+  'January',
+  'February',
+  'March',
+  'April',
+  'May',
+  'June',
+  'July',
+  'August',
+  'September',
+  'October',
+  'November',
+  'December',
+];
+
+/** Heads of the table of changed inputs. */
+export const INPUT_HEADS = ['field', 'before', 'after'] as const;
+
+/**
+ * Fields of the site that changed.
+ * @param reevaluation the bank judged again
+ * @returns cells, one a head
+ */
+export function inputRows({ inputs }: Reevaluation): string[][] {
+  const shown = (value: string | number | boolean | null): string => {
+    if (value === null) return '–';
+    return typeof value === 'number' ? formatNumber(value, 'given') : plainName(String(value));
+  };
+  return inputs.map(({ path, before, after }) => [path, shown(before), shown(after)]);
+}
+
+/**
+ * What a re-evaluation found, in one sentence.
+ * @param reevaluation the bank judged again
+ * @returns for a headline
+ */
+export function reevaluationFinding({ verdict, changes, inputs, newRecord, remedies }: Reevaluation): string {
+  if (inputs.length === 0 && !newRecord) return 'nothing changed';
+  const moved =
+    verdict.before === verdict.after
+      ? `still ${VERDICT_WORDS[verdict.after]}`
+      : `from ${VERDICT_WORDS[verdict.before]} to ${VERDICT_WORDS[verdict.after]}`;
+  return `${moved}; ${formatNumber(changes.length, 'whole')} ${changes.length === 1 ? 'figure' : 'figures'} changed, ${waysWords(remedies)}`;
+}
+
+function waysWords(remedies: readonly Remedy[]): string {
+  const mend = remedies.filter(({ mends }) => mends).length;
+  if (remedies.length === 0) return 'nothing to mend';
+  if (mend === 0) return 'no single way mends it whole';
+  return `${countWord(mend)} ${mend === 1 ? 'way' : 'ways'} to mend it`;
+}
+
+function listed(parts: readonly string[]): string {
+  if (parts.length < 2) return parts.join('');
+  return `${parts.slice(0, -1).join(', ')} and ${parts[parts.length - 1]}`;
+}

@@ -1,0 +1,60 @@
+import type { BankOutcome, Reevaluation } from '#libs/engine/index.js';
+import {
+  CHANGE_HEADS,
+  changeRows,
+  INPUT_HEADS,
+  inputRows,
+  LIKE_HEADS,
+  likeRows,
+  REMEDY_HEADS,
+  reevaluationFinding,
+  remedyRows,
+  sinceSentences,
+  tonightSentences,
+} from '#libs/present/reevaluation-words.js';
+import { NOTE, type Paper } from './paper.js';
+import { type Column, drawTable } from './table.js';
+import { BODY, type Style } from './typesetter.js';
+
+const SMALL: Style = { ...BODY, size: 8.8 };
+
+/** Shares of the columns; the first is words, the others figures. */
+const CHANGE_SHARES = [34, 16, 16, 14, 28];
+const REMEDY_SHARES = [52, 18, 15, 15, 16, 16];
+const INPUT_SHARES = [50, 25, 25];
+const LIKE_SHARES = [54, 23, 23];
+
+/** A bank judged again: what to do first, what changed in numbers, what would mend it, and since when. */
+export function drawReevaluation(paper: Paper, { site }: BankOutcome, reevaluation: Reevaluation | undefined): void {
+  if (reevaluation === undefined) return;
+  const currency = site.currency ?? '';
+  paper.heading('A', `Judged again: ${reevaluationFinding(reevaluation)}`, { level: 3, keep: 90 });
+  const tonight = tonightSentences(reevaluation);
+  tonight.forEach((sentence, k) => {
+    paper.paragraph([k === 0 ? { text: sentence, weight: 'semibold' } : sentence]);
+  });
+  drawPart(paper, INPUT_HEADS, INPUT_SHARES, inputRows(reevaluation));
+  drawPart(paper, CHANGE_HEADS, CHANGE_SHARES, changeRows(reevaluation, currency));
+  drawPart(paper, REMEDY_HEADS, REMEDY_SHARES, remedyRows(reevaluation, currency));
+  for (const sentence of sinceSentences(reevaluation)) paper.paragraph([sentence]);
+  drawPart(paper, LIKE_HEADS, LIKE_SHARES, likeRows(reevaluation));
+  paper.paragraph(
+    [
+      'Before and after are judged by the same engine, the bank as it measures. A way to mend it is weighed by itself, with ' +
+        'the lowest set point that meets the target; parts are capacitors, stages, reactors and switches by the price book, ' +
+        'and more cabinets where a larger bank needs them: no offer. The day of a change leaves the least sum of squares, ' +
+        'each weekday with a mean of its own.',
+    ],
+    { style: NOTE },
+  );
+}
+
+function drawPart(paper: Paper, heads: readonly string[], shares: readonly number[], rows: readonly string[][]): void {
+  if (rows.length === 0) return;
+  const columns: Column[] = heads.map((head, k) => ({
+    head,
+    share: shares[k]!,
+    align: k === 0 || head === 'verdict' ? 'left' : 'right',
+  }));
+  drawTable(paper, columns, [...rows], { style: SMALL, padding: 2.4, after: 5 });
+}
