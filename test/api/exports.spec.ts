@@ -6,7 +6,7 @@ import { canonicalJson } from '#libs/contract/canonical-json.js';
 import { readWorkbookRows } from '#libs/meter-files/xlsx/read-workbook-rows.js';
 import { databases, type TestDatabase } from '../support/databases.js';
 import { pngFile } from '../support/made-picture.js';
-import { startServer, type TestServer } from '../support/test-server.js';
+import { type Answer, startServer, type TestServer } from '../support/test-server.js';
 import { meterFile, siteFile } from './site-builder.js';
 
 const { create } = databases[0]!;
@@ -26,15 +26,20 @@ describe('exports over HTTP', () => {
     server = await startServer(database.url);
     id = (await server.ask('POST', '/api/sites', siteFile({ name: NAME }))).body.id;
     await server.upload(id, meterFile(9));
-    const plan = (await server.ask('POST', `/api/sites/${id}/assessments?wait=60`, {})).body;
+    const plan = (await judged(id)).body;
     ({ recordId, recordHash, contentHash } = plan);
-  });
+  }, 180_000);
 
   afterAll(async () => {
     await server.close();
     await database.drop();
   });
 
+  /** The revision of a judgement, however long it takes. */
+  const judged = async (siteId: string, body: object = {}): Promise<Answer> => {
+    const answer = await server.ask('POST', `/api/sites/${siteId}/assessments?wait=60`, body);
+    return answer.status === 202 ? judged(siteId, body) : answer;
+  };
   const file = async (path: string) => {
     const response = await fetch(`${server.base}/api/sites/${id}${path}`);
     return { status: response.status, bytes: Buffer.from(await response.arrayBuffer()), headers: response.headers };
@@ -59,7 +64,7 @@ describe('exports over HTTP', () => {
     const other = (await server.ask('POST', '/api/sites', siteFile({ name: NAME }))).body.id;
     const uploaded = await server.upload(other, bytes);
     expect(uploaded.status).toBe(201);
-    const again = (await server.ask('POST', `/api/sites/${other}/assessments?wait=60`, {})).body;
+    const again = (await judged(other)).body;
     expect([again.recordHash, again.contentHash]).toEqual([recordHash, contentHash]);
   });
 
@@ -97,10 +102,10 @@ describe('exports over HTTP', () => {
     const asked = { paper: 'Letter', logo, reason: 'on letter paper' };
     const { id: other } = (await server.ask('POST', '/api/sites', siteFile({ name: 'Letter works' }))).body;
     await server.upload(other, meterFile(9));
-    const ask = (body: object) => server.ask('POST', `/api/sites/${other}/assessments?wait=60`, body);
+    const ask = (body: object) => judged(other, body);
     const bomb = pngFile({ ...size, data: deflateSync(Buffer.alloc(20_000_000)) }).toString('base64');
     expect((await ask({ ...asked, logo: bomb })).body).toMatchObject({ code: 'too-large', path: 'logo' });
-    expect((await ask(asked)).status).toBe(201);
+    expect((await ask(asked)).status).toBeLessThan(202);
     const { body } = await server.ask('GET', `/api/sites/${other}/revisions/1/proposal.pdf`);
     const text = (body as Buffer).toString('latin1');
     expect(text).toContain('/MediaBox [0 0 612 792]');
