@@ -6,7 +6,7 @@ import { canonicalJson } from '#libs/contract/canonical-json.js';
 import { readWorkbookRows } from '#libs/meter-files/xlsx/read-workbook-rows.js';
 import { databases, type TestDatabase } from '../support/databases.js';
 import { pngFile } from '../support/made-picture.js';
-import { startServer, type TestServer } from '../support/test-server.js';
+import { type Answer, startServer, type TestServer } from '../support/test-server.js';
 import { meterFile, siteFile } from './site-builder.js';
 
 const { create } = databases[0]!;
@@ -26,15 +26,20 @@ describe('exports over HTTP', () => {
     server = await startServer(database.url);
     id = (await server.ask('POST', '/api/sites', siteFile({ name: NAME }))).body.id;
     await server.upload(id, meterFile(9));
-    const plan = (await server.ask('POST', `/api/sites/${id}/assessments?wait=60`, {})).body;
+    const plan = (await judged(id)).body;
     ({ recordId, recordHash, contentHash } = plan);
-  });
+  }, 180_000);
 
   afterAll(async () => {
     await server.close();
     await database.drop();
   });
 
+  /** The revision of a judgement, however long it takes. */
+  const judged = async (siteId: string, body: object = {}): Promise<Answer> => {
+    const answer = await server.ask('POST', `/api/sites/${siteId}/assessments?wait=60`, body);
+    return answer.status === 202 ? judged(siteId, body) : answer;
+  };
   const file = async (path: string) => {
     const response = await fetch(`${server.base}/api/sites/${id}${path}`);
     return { status: response.status, bytes: Buffer.from(await response.arrayBuffer()), headers: response.headers };
@@ -43,7 +48,7 @@ describe('exports over HTTP', () => {
     fetch(server.base + path, { method: 'POST', headers: { 'content-type': type }, body: new Uint8Array(body) });
 
   it.each(FORMS)('give a site as %s that is taken back as the same site', async (form) => {
-    const { status, bytes, headers } = await file(`/exports/site.${form}`);
+    const { status, bytes, headers } = await file(`/export?form=${form}`);
     expect(status).toBe(200);
     expect(headers.get('content-disposition')).toBe(`attachment; filename="site.${form}"`);
     const path = form === 'json' ? '/api/sites' : '/api/site-imports';
@@ -55,32 +60,29 @@ describe('exports over HTTP', () => {
   });
 
   it.each(FORMS)('give a record as %s that is uploaded again with the same hash, and plans the same', async (form) => {
-    const { bytes } = await file(`/records/${recordId}/exports/record.${form}`);
+    const { bytes } = await file(`/records/${recordId}/export?form=${form}`);
     const other = (await server.ask('POST', '/api/sites', siteFile({ name: NAME }))).body.id;
     const uploaded = await server.upload(other, bytes);
     expect(uploaded.status).toBe(201);
-    const again = (await server.ask('POST', `/api/sites/${other}/assessments?wait=60`, {})).body;
+    const again = (await judged(other)).body;
     expect([again.recordHash, again.contentHash]).toEqual([recordHash, contentHash]);
   });
 
   it('give plan and calculation sheet with the result’s own numbers', async () => {
     const { result } = (await server.ask('GET', `/api/sites/${id}/revisions/1`)).body;
-    expect(JSON.parse((await file('/revisions/1/exports/plan.json')).bytes.toString())).toEqual(result);
-    const rows = parse((await file('/revisions/1/exports/plan.csv')).bytes, { columns: true }) as Record<
-      string,
-      string
-    >[];
+    expect(JSON.parse((await file('/revisions/1/plan')).bytes.toString())).toEqual(result);
+    const rows = parse((await file('/revisions/1/plan?form=csv')).bytes, { columns: true }) as Record<string, string>[];
     const value = (path: string) => Number(rows.find((row) => row.path === path)!.value);
     expect(value('requirement.p99Kvar')).toBe(result.requirement.p99Kvar);
     expect(value('duties[0].value')).toBe(result.duties[0].value);
-    const sheet = parse((await file('/revisions/1/exports/calculation.csv')).bytes, { columns: true }) as {
+    const sheet = parse((await file('/revisions/1/calculation?form=csv')).bytes, { columns: true }) as {
       id: string;
       value: string;
     }[];
     expect(sheet.map((row) => [row.id, Number(row.value)])).toEqual(
       result.figures.map((figure: { id: string; value: number }) => [figure.id, figure.value]),
     );
-    const { bytes } = await file('/revisions/1/exports/calculation.xlsx');
+    const { bytes } = await file('/revisions/1/calculation?form=xlsx');
     const cells = await readWorkbookRows(once(bytes));
     expect(cells[0]!.slice(0, 3)).toEqual(['id', 'label', 'value']);
     expect(cells.slice(1).map(([, , cell]) => Number(cell))).toEqual(
@@ -89,7 +91,7 @@ describe('exports over HTTP', () => {
   });
 
   it('let no spreadsheet run a name', async () => {
-    const text = (await file('/exports/site.csv')).bytes.toString();
+    const text = (await file('/export?form=csv')).bytes.toString();
     expect(text).toContain(`"'=HYPERLINK(`);
     expect(text).not.toMatch(/(^|,)"?=/m);
   });
@@ -100,10 +102,10 @@ describe('exports over HTTP', () => {
     const asked = { paper: 'Letter', logo, reason: 'on letter paper' };
     const { id: other } = (await server.ask('POST', '/api/sites', siteFile({ name: 'Letter works' }))).body;
     await server.upload(other, meterFile(9));
-    const ask = (body: object) => server.ask('POST', `/api/sites/${other}/assessments?wait=60`, body);
+    const ask = (body: object) => judged(other, body);
     const bomb = pngFile({ ...size, data: deflateSync(Buffer.alloc(20_000_000)) }).toString('base64');
     expect((await ask({ ...asked, logo: bomb })).body).toMatchObject({ code: 'too-large', path: 'logo' });
-    expect((await ask(asked)).status).toBe(201);
+    expect((await ask(asked)).status).toBeLessThan(202);
     const { body } = await server.ask('GET', `/api/sites/${other}/revisions/1/proposal.pdf`);
     const text = (body as Buffer).toString('latin1');
     expect(text).toContain('/MediaBox [0 0 612 792]');
@@ -111,13 +113,12 @@ describe('exports over HTTP', () => {
   });
 
   it.each([
-    '/exports/site.pdf',
-    '/exports/plan.json',
-    '/revisions/1/exports/site.csv',
-    '/revisions/9/exports/plan.csv',
-    '/records/00000000-0000-0000-0000-000000000000/exports/record.csv',
-  ])('know no %s', async (path) => {
-    expect((await file(path)).status).toBe(404);
+    ['/export?form=pdf', 422],
+    ['/export?kind=csv', 422],
+    ['/revisions/9/plan?form=csv', 404],
+    ['/records/00000000-0000-0000-0000-000000000000/export', 404],
+  ])('know no %s', async (path, status) => {
+    expect((await file(path)).status).toBe(status);
   });
 
   it('refuse a site file that is none, naming the row', async () => {

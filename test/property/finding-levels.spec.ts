@@ -107,6 +107,12 @@ describe('findings', () => {
     expect(shown.value.endsWith(`\u00a0${finding!.unit}`)).toBe(true);
   });
 
+  it('lay an inrush over its limit to the assumed inductance, closed form and exact alike', () => {
+    const inrush = findings(outcomes[0]!).filter(({ what }) => what.startsWith('Inrush current'));
+    expect(inrush.length).toBeGreaterThan(2);
+    expect(new Set(inrush.map(({ code }) => code))).toEqual(new Set(['inrush.assumedInductance']));
+  });
+
   it('keep hazard words out', () => {
     for (const outcome of outcomes) {
       for (const { what, consequence } of findings(outcome)) {

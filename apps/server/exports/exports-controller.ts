@@ -1,5 +1,5 @@
 import { Readable } from 'node:stream';
-import { Controller, Get, Param, Res } from '@nestjs/common';
+import { Controller, Get, Param, Query, Res } from '@nestjs/common';
 import type { FastifyReply } from 'fastify';
 import { type EstimateResult, InputProblem, type Result } from '#libs/engine/index.js';
 import { keptRecordChunks } from '#libs/meter-files/kept-record/write-kept-record.js';
@@ -11,7 +11,7 @@ import { readRecord } from '#libs/store/records.js';
 import { Store } from '#libs/store/store.js';
 import { actorOf } from '../people/actor.js';
 import { Needs } from '../people/needs.js';
-import { findRevision } from '../planning/find-revision.js';
+import { findRevision, type RevisionPath } from '../planning/find-revision.js';
 import { findRecord } from '../records/find-record.js';
 import { findSite } from '../sites/find-site.js';
 
@@ -26,64 +26,77 @@ const TYPES: Record<TableForm, string> = {
 export class ExportsController {
   constructor(private readonly store: Store) {}
 
-  @Get('exports/:file')
-  @Needs('viewer', 'Gives the site file as site.json, site.csv or site.xlsx, to be taken back as it is.')
-  async site(@Param('siteId') siteId: string, @Param('file') file: string, @Res() reply: FastifyReply) {
+  @Get('export')
+  @Needs('viewer', 'Gives the site file to be taken back as it is: ?form=json, csv or xlsx.')
+  async site(@Param('siteId') siteId: string, @Query() query: object, @Res() reply: FastifyReply) {
     const { document } = await findSite(this.store, actorOf(reply.request), siteId);
-    const { form } = wanted(file, ['site']);
-    return attached(reply, file, form).send(documentFile(document, form));
+    const form = formAsked(query);
+    return attached(reply, 'site', form).send(documentFile(document, form));
   }
 
-  @Get('records/:recordId/exports/:file')
-  @Needs(
-    'viewer',
-    'Gives a load record as record.json, record.csv or record.xlsx, to be uploaded again with the same hash.',
-  )
+  @Get('records/:recordId/export')
+  @Needs('viewer', 'Gives a load record to be uploaded again with the same hash: ?form=json, csv or xlsx.')
   async record(
     @Param('siteId') siteId: string,
     @Param('recordId') recordId: string,
-    @Param('file') file: string,
+    @Query() query: object,
     @Res() reply: FastifyReply,
   ) {
     const site = await findSite(this.store, actorOf(reply.request), siteId);
     const { id } = await findRecord(this.store, site, recordId);
-    const { form } = wanted(file, ['record']);
+    const form = formAsked(query);
     const record = await this.store.read((manager) => readRecord(manager, id));
     if (record === null) throw new Error(`record ${id} vanished`);
-    return attached(reply, file, form).send(Readable.from(keptRecordChunks(record, form)));
+    return attached(reply, 'record', form).send(Readable.from(keptRecordChunks(record, form)));
   }
 
-  @Get('revisions/:revision/exports/:file')
-  @Needs('viewer', 'Gives a plan, or its calculation sheet, as plan or calculation with .json, .csv or .xlsx.')
+  @Get('revisions/:revision/plan')
+  @Needs('viewer', 'Gives a plan with all its parts: ?form=json, csv (path, kind, value) or xlsx (a sheet a part).')
   async plan(
     @Param('siteId') siteId: string,
     @Param('revision') revision: string,
-    @Param('file') file: string,
+    @Query() query: object,
     @Res() reply: FastifyReply,
   ) {
-    const found = await findRevision(this.store, actorOf(reply.request), { siteId, revision });
-    const { name, form } = wanted(file, ['plan', 'calculation']);
-    const result = JSON.parse(found.result) as Result | EstimateResult;
-    const bytes =
-      name === 'plan'
-        ? planFile(result, planTables(result), form)
-        : calculationFile(result.figures, calculationTable(result), form);
-    return attached(reply, file, form).send(bytes);
+    const result = await this.#result(reply, { siteId, revision });
+    const form = formAsked(query);
+    return attached(reply, 'plan', form).send(planFile(result, planTables(result), form));
+  }
+
+  @Get('revisions/:revision/calculation')
+  @Needs('viewer', 'Gives the calculation sheet of a plan: every figure with formula, working and source.')
+  async calculation(
+    @Param('siteId') siteId: string,
+    @Param('revision') revision: string,
+    @Query() query: object,
+    @Res() reply: FastifyReply,
+  ) {
+    const result = await this.#result(reply, { siteId, revision });
+    const form = formAsked(query);
+    const bytes = calculationFile(result.figures, calculationTable(result), form);
+    return attached(reply, 'calculation', form).send(bytes);
+  }
+
+  async #result({ request }: FastifyReply, path: RevisionPath): Promise<Result | EstimateResult> {
+    const found = await findRevision(this.store, actorOf(request), path);
+    return JSON.parse(found.result) as Result | EstimateResult;
   }
 }
 
-/** @throws InputProblem `not-found` for a file that isn't made */
-function wanted(file: string, names: readonly string[]): { name: string; form: TableForm } {
-  const found = names
-    .flatMap((name) => TABLE_FORMS.map((form) => ({ name, form })))
-    .find(({ name, form }) => file === `${name}.${form}`);
-  if (found !== undefined) return found;
-  const expected = names.map((name) => `${name}.json, ${name}.csv, ${name}.xlsx`).join(', ');
-  throw new InputProblem([
-    { code: 'not-found', expected: `one of ${expected}`, found: JSON.stringify(file.slice(0, 60)) },
-  ]);
+/** @throws InputProblem for a form that isn't made, or another parameter */
+function formAsked(query: object): TableForm {
+  const { form = 'json', ...rest } = query as Record<string, unknown>;
+  const [unknown] = Object.keys(rest);
+  if (unknown !== undefined) {
+    const path = JSON.stringify(unknown.slice(0, 60));
+    throw new InputProblem([{ code: 'unknown-key', path, expected: 'form', found: 'another parameter' }]);
+  }
+  const known = TABLE_FORMS.find((one) => one === form);
+  if (known !== undefined) return known;
+  const found = JSON.stringify(String(form).slice(0, 60));
+  throw new InputProblem([{ code: 'out-of-range', path: 'form', expected: TABLE_FORMS.join(', '), found }]);
 }
 
-function attached(reply: FastifyReply, file: string, form: TableForm): FastifyReply {
-  return reply.type(TYPES[form]).header('content-disposition', `attachment; filename="${file}"`);
+function attached(reply: FastifyReply, name: string, form: TableForm): FastifyReply {
+  return reply.type(TYPES[form]).header('content-disposition', `attachment; filename="${name}.${form}"`);
 }
