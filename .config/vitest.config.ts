@@ -6,6 +6,8 @@ import { defineConfig } from 'vitest/config';
 const conditions = ['source', ...defaultServerConditions];
 const soak = process.env.VARWRIGHT_SOAK === '1';
 const withDatabases = ['libs/store/**/*.spec.ts', 'libs/jobs/**/*.spec.ts', 'apps/server/**/*.spec.ts'];
+// What is timed has the machine to itself.
+const alone = ['test/browser/pace.spec.ts'];
 const startPostgres = ['test/support/postgres.ts'];
 
 const project = (name: string, include: string[], timeoutMs: number, more: object = {}) => ({
@@ -25,6 +27,8 @@ export default defineConfig({
   ssr: { resolve: { conditions } },
   test: {
     pool: 'forks',
+    // left to itself the runner keeps a core free
+    maxWorkers: 2,
     projects: [
       project(
         'unit',
@@ -38,7 +42,15 @@ export default defineConfig({
         { exclude: withDatabases },
       ),
       project('store', withDatabases, 30_000, { globalSetup: startPostgres }),
-      project('whole', ['test/{golden,api,faults,browser}/**/*.spec.ts'], 120_000, { globalSetup: startPostgres }),
+      project('whole', ['test/{golden,api,faults,browser}/**/*.spec.ts'], 120_000, {
+        globalSetup: startPostgres,
+        exclude: alone,
+      }),
+      project('alone', alone, 120_000, {
+        globalSetup: startPostgres,
+        maxWorkers: 1,
+        sequence: { groupOrder: 1 },
+      }),
     ],
   },
 });

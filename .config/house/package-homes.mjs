@@ -33,7 +33,7 @@ const PACKAGE_HOMES = {
 };
 
 /** What the page loads or the engine is made of runs in a browser too. */
-const WITHOUT_RUNTIME = ['libs/engine', 'libs/contract', 'libs/present', 'apps/web'];
+const WITHOUT_RUNTIME = ['libs/engine', 'libs/contract', 'libs/present', 'libs/review', 'apps/web'];
 const FREE = ['test', '.config'];
 
 /** @type {Rule} */
@@ -84,12 +84,14 @@ const AMBIENT = new Set(
 const AMBIENT_MEMBERS = new Set(['Math.random', 'Date.now']);
 const LOCAL_CLOCK = /^(get|set)(Date|Day|FullYear|Hours|Minutes|Month|TimezoneOffset)$/;
 const LOCALE = /^(toLocale\w*|localeCompare)$/;
-const PURE = ['libs/engine', 'libs/present'];
+const PURE = ['libs/engine', 'libs/present', 'libs/review'];
+/** Time zones of any machine, and the decimal mark of the reader before the page. */
+const LOCALE_HOMES = ['libs/contract/time-zone.ts', 'apps/web/readers-mark.ts'];
 
 /** @type {Rule} */
 const pure = {
   name: 'pure',
-  why: 'the engine and present know no clock, no chance, no console, no locale: same input, same output to the bit',
+  why: 'the engine, present and review know no clock, no chance, no console, no locale: same input, same output to the bit',
   find: (house) =>
     house.modules
       .filter((module) => PURE.includes(module.home) && !module.spec)
@@ -99,11 +101,11 @@ const pure = {
 /** @type {Rule} */
 const timeZoneHome = {
   name: 'intl-home',
-  why: 'only libs/contract/time-zone.ts calls Intl; no other lib lets the machine’s locale decide anything',
+  why: 'only libs/contract/time-zone.ts calls Intl, and only the page asks for its reader’s decimal mark; nothing else lets the machine’s locale decide anything',
   find: (house) =>
     house.modules
       .filter((module) => /^(libs|apps|migrations)/.test(module.home) && !module.spec)
-      .filter((module) => module.path !== 'libs/contract/time-zone.ts')
+      .filter((module) => !LOCALE_HOMES.includes(module.path))
       .flatMap((module) => findNodes(module, localeUse)),
 };
 

@@ -56,14 +56,19 @@ describe('the arguments of a command', () => {
     [
       'an unknown option',
       ['a', '--lod', '--json'],
-      'one of --load, --pdf, --format, --map, --time-zone, --extend, --json',
+      'one of --load, --pdf, --paper, --logo, --export, --calculation, --figures, --format, --map, --time-zone, --extend, --json',
       '--lod',
     ],
-    ['a short option', ['a', '-j'], 'one of --load, --pdf, --format, --map, --time-zone, --extend, --json', '-j'],
+    [
+      'a short option',
+      ['a', '-j'],
+      'one of --load, --pdf, --paper, --logo, --export, --calculation, --figures, --format, --map, --time-zone, --extend, --json',
+      '-j',
+    ],
     [
       'a name of the language',
       ['a', '--constructor'],
-      'one of --load, --pdf, --format, --map, --time-zone, --extend, --json',
+      'one of --load, --pdf, --paper, --logo, --export, --calculation, --figures, --format, --map, --time-zone, --extend, --json',
       '--constructor',
     ],
   ])('with %s are refused, naming it', (_what, args, expected, found) => {

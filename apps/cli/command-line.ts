@@ -65,10 +65,10 @@ function operandProblems({ operand }: Command, operands: string[]): Problem[] {
 }
 
 function stdinProblems(operands: string[], { values, lists }: CommandLine): Problem[] {
-  const single = ['load', 'map', 'before', 'before-load'].map((name) => values.get(name));
-  const named = [...operands, ...single, ...(lists.get('extend') ?? [])];
+  const inputs = ['load', 'map', 'logo', 'before', 'before-load'].map((name) => values.get(name));
+  const named = [...operands, ...inputs, ...(lists.get('extend') ?? [])];
   const files = named.filter((file) => file === STDIN);
-  const toStdin = ['pdf', 'netlist']
+  const toStdin = ['pdf', 'netlist', 'export', 'calculation', 'figures', 'keep']
     .filter((name) => values.get(name) === STDIN)
     .map((name) => usage(`--${name} with the name of a file`, '"-"'));
   return files.length > 1 ? [usage('"-" for one file only', `it ${files.length} times`), ...toStdin] : toStdin;

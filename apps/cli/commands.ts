@@ -2,6 +2,8 @@ import type { Command } from './command.js';
 
 const METER_OPTIONS = { format: 'FORMAT', map: 'FILE', 'time-zone': 'ZONE' };
 
+const SHEET_OPTIONS = { paper: 'SIZE', logo: 'FILE' };
+
 const METER_LISTS = { extend: 'METER-FILE' };
 
 const METER_DETAILS = `  --extend FILE      a further meter file that extends or corrects the record, read by the same options; may stand
@@ -12,26 +14,34 @@ const METER_DETAILS = `  --extend FILE      a further meter file that extends or
   --time-zone ZONE   zone of local stamps: "Europe/Dublin", "UTC", "+10:00"
 `;
 
+const EXPORT_OPTIONS = { export: 'OUT', calculation: 'OUT', figures: 'FOLDER' };
+
 const PLAN_DETAILS = `  --load METER-FILE  the meter's record; without it the site's estimate (bills, equipment list)
   --pdf OUT          write the proposal there
+  --paper SIZE       sheet of the proposal: A4 (where not given) or Letter
+  --logo FILE        the site's logo for the proposal, PNG or JPEG, at most 262144 bytes and 2000000 pixels
+  --export OUT       write the plan with all its parts; OUT ends in .json, .csv (path, kind, value) or .xlsx
+  --calculation OUT  write the calculation sheet alone: .json, .csv or .xlsx
+  --figures FOLDER   write single-line diagram and figures there as SVG
 ${METER_DETAILS}`;
 
 /** Every command; a command's own file is loaded when it is called. */
 export const COMMANDS: Record<string, Command> = {
   read: {
     operand: 'METER-FILE',
-    values: METER_OPTIONS,
+    values: { keep: 'OUT', ...METER_OPTIONS },
     lists: METER_LISTS,
     flags: ['json', 'intervals', 'csv'],
     does: 'read a meter file and say what it holds',
     details: `${METER_DETAILS}  --intervals        with every valid interval (JSON)
   --csv              the intervals as CSV in UTC
+  --keep OUT         write the record to be read back to the same hash: .json, .csv or .xlsx
 `,
     load: () => import('./read.js'),
   },
   plan: {
     operand: 'SITE',
-    values: { load: 'METER-FILE', pdf: 'OUT', ...METER_OPTIONS },
+    values: { load: 'METER-FILE', pdf: 'OUT', ...SHEET_OPTIONS, ...EXPORT_OPTIONS, ...METER_OPTIONS },
     lists: METER_LISTS,
     flags: ['json'],
     does: 'design a bank for a site and judge it',
@@ -40,7 +50,15 @@ export const COMMANDS: Record<string, Command> = {
   },
   assess: {
     operand: 'SITE',
-    values: { load: 'METER-FILE', pdf: 'OUT', before: 'SITE', 'before-load': 'METER-FILE', ...METER_OPTIONS },
+    values: {
+      load: 'METER-FILE',
+      pdf: 'OUT',
+      before: 'SITE',
+      'before-load': 'METER-FILE',
+      ...SHEET_OPTIONS,
+      ...EXPORT_OPTIONS,
+      ...METER_OPTIONS,
+    },
     lists: METER_LISTS,
     flags: ['json'],
     does: "judge the site's own bank",
@@ -49,6 +67,16 @@ export const COMMANDS: Record<string, Command> = {
   --before-load FILE the meter's record of then; the same record where not given
 `,
     load: () => import('./assess.js'),
+  },
+  site: {
+    operand: 'SITE',
+    values: { export: 'OUT' },
+    lists: {},
+    flags: ['json'],
+    does: 'check a site file and write it in another form',
+    details: `  --export OUT       write it as .json, .csv or .xlsx; each is read as a site file again, with the same hash
+`,
+    load: () => import('./site.js'),
   },
   scan: {
     operand: 'SITE',
@@ -63,6 +91,20 @@ export const COMMANDS: Record<string, Command> = {
                      simulator, by default at the orders present; the gravest closing beside it, .inrush in its name
 `,
     load: () => import('./scan.js'),
+  },
+  verify: {
+    operand: 'FILE',
+    values: { database: 'URL' },
+    lists: {},
+    flags: ['json'],
+    does: 'say whether a paper is what was approved',
+    details: `  FILE               the PDF; or the 16 digits behind "content" at the head of a page, for a scan
+  --database URL     of the installation that issued it, "sqlite:FILE" or "postgres://…"; else DB_URL, or the server's
+                     own file under DATA_DIR; it is only read
+                     Exit: 0 approved as it stands, also signed afterwards; 6 superseded, withdrawn, a draft or altered;
+                     3 not ours
+`,
+    load: () => import('./verify.js'),
   },
 };
 

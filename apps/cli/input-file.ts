@@ -37,18 +37,47 @@ export async function openInput(path: string): Promise<InputFile> {
  * @throws InputProblem where it can't be opened, is no UTF-8, no JSON, or too large
  */
 export async function readJson(path: string): Promise<unknown> {
+  return jsonFrom(await readModerate(path));
+}
+
+/**
+ * Reads a file of moderate size whole.
+ * @param path what was typed
+ * @returns its bytes
+ * @throws InputProblem where it can't be opened, or is too large
+ */
+export async function readModerate(path: string): Promise<Uint8Array> {
+  const bytes = await readSmall(path, MOST_JSON_BYTES);
+  if (bytes.length > MOST_JSON_BYTES) throw refusal('too-large', `a file of at most ${MOST_JSON_BYTES} bytes`, 'more');
+  return bytes;
+}
+
+/**
+ * Reads a small file whole.
+ * @param path what was typed
+ * @param mostBytes beyond these nothing is read [bytes]
+ * @returns its bytes; one more than the most where there are more
+ * @throws InputProblem where it can't be opened
+ */
+export async function readSmall(path: string, mostBytes: number): Promise<Uint8Array> {
   const { bytes } = await openInput(path);
   const chunks: Uint8Array[] = [];
   let size = 0;
   for await (const chunk of bytes) {
     size += chunk.length;
-    if (size > MOST_JSON_BYTES) throw refusal('too-large', `a file of at most ${MOST_JSON_BYTES} bytes`, 'more');
     chunks.push(new Uint8Array(chunk));
+    if (size > mostBytes) break;
   }
-  return parseJson(Buffer.concat(chunks));
+  return Buffer.concat(chunks).subarray(0, mostBytes + 1);
 }
 
-function parseJson(bytes: Uint8Array): unknown {
+/**
+ * What a JSON document says.
+ * @param bytes UTF-8
+ * @returns what JSON.parse gave
+ * @throws InputProblem where it is no UTF-8 or no JSON
+ */
+export function jsonFrom(bytes: Uint8Array): unknown {
   let text: string;
   try {
     text = new TextDecoder('utf-8', { fatal: true }).decode(bytes);

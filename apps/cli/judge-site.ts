@@ -21,11 +21,13 @@ import { putEstimateInWords, putInWords } from '#libs/present/put-in-words.js';
 import { estimateReport, resultReport } from '#libs/present/terminal-report.js';
 import type { CommandLine } from './command.js';
 import { usage } from './command-line.js';
-import { readJson } from './input-file.js';
 import { readMeterRecord } from './meter-record.js';
 import { say, write, writeJson } from './output.js';
+import { type PaperSheet, paperSheet } from './paper-sheet.js';
+import { planExports } from './plan-exports.js';
 import { proposalTarget } from './proposal-target.js';
 import { inFile } from './refused-file.js';
+import { readSiteDocument } from './site-document.js';
 
 /** The engine's two functions of one command: from a meter's record, and from the site's own estimate. */
 interface Judges {
@@ -38,6 +40,7 @@ interface Told {
   outcome: Outcome | EstimateOutcome;
   report: string;
   contentHash: string;
+  recordHash: string | null;
 }
 
 /**
@@ -51,8 +54,10 @@ interface Told {
 export async function judgeSite(line: CommandLine, kind: Outcome['kind'], judges: Judges): Promise<number> {
   const load = line.values.get('load');
   const pdf = line.values.get('pdf');
+  const sheet = await paperSheet(line);
   const target = pdf === undefined ? null : await proposalTarget(pdf);
-  const given = await inFile(line.operand, async () => readSiteWithMathjs(await readJson(line.operand)));
+  const exports = await planExports(line);
+  const given = await inFile(line.operand, async () => readSiteWithMathjs(await readSiteDocument(line.operand)));
   const site = frozenSite(given, Date.now() / 1000);
   if (load === undefined && site.estimate === undefined) {
     throw new InputProblem([usage('--load METER-FILE, or a site file with an estimate', 'none')]);
@@ -65,9 +70,10 @@ export async function judgeSite(line: CommandLine, kind: Outcome['kind'], judges
       : byRecord(site, kind, judges, (await readMeterRecord(line, load, site.timeZone)).record);
   await nextTurn(); // an interruption that came meanwhile is heard here
   if (target !== null) {
-    await target.write(await proposalOf(told));
+    await target.write(await proposalOf(told, sheet));
     say(`proposal written to ${pdf}`);
   }
+  for (const path of await exports.write(told.outcome)) say(`written: ${path}`);
   const { result } = told.outcome;
   if (line.flags.has('json')) await writeJson(result);
   else await write(told.report);
@@ -78,8 +84,9 @@ function byRecord(site: Site, kind: Outcome['kind'], judges: Judges, record: Loa
   const zone = zoneTableOf(site.timeZone, record);
   const computed = withRobustness(judges.record(site, record, zone));
   const outcome: Outcome = { ...computed, result: putInWords(computed.result) };
-  const contentHash = contentHashOf({ kind, site, recordHash: sha256(recordBytes(record)), zone });
-  return { outcome, report: resultReport(outcome), contentHash };
+  const recordHash = sha256(recordBytes(record));
+  const contentHash = contentHashOf({ kind, site, recordHash, zone });
+  return { outcome, report: resultReport(outcome), contentHash, recordHash };
 }
 
 function byEstimate(site: Site, kind: Outcome['kind'], judges: Judges): Told {
@@ -90,6 +97,7 @@ function byEstimate(site: Site, kind: Outcome['kind'], judges: Judges): Told {
     outcome,
     report: estimateReport(outcome),
     contentHash: contentHashOf({ kind, site, recordHash: null, zone }),
+    recordHash: null,
   };
 }
 
@@ -110,7 +118,7 @@ function needBank(site: Site): void {
 }
 
 /** The drawing of papers is loaded only where one is wanted. */
-async function proposalOf({ outcome, contentHash }: Told): Promise<Uint8Array> {
+async function proposalOf({ outcome, contentHash, recordHash }: Told, sheet: PaperSheet): Promise<Uint8Array> {
   const { renderProposal } = await import('#libs/proposal/render-proposal.js');
   return renderProposal(outcome, {
     number: contentHash.slice(0, 8),
@@ -118,7 +126,10 @@ async function proposalOf({ outcome, contentHash }: Told): Promise<Uint8Array> {
     state: 'draft, not reviewed',
     preparedBy: null,
     contentHash,
+    recordHash,
     engineVersion: ENGINE_VERSION,
+    date: outcome.site.asOf,
+    ...sheet,
   });
 }
 

@@ -4,21 +4,22 @@ import { basename, dirname, join } from 'node:path';
 import { InputProblem } from '#libs/engine/index.js';
 import { usage } from './command-line.js';
 
-/** A place a proposal will stand in whole, or not at all. */
+/** A place a file will stand in whole, or not at all. */
 export interface ProposalTarget {
   write(bytes: Uint8Array): Promise<void>;
 }
 
 /**
- * Makes sure a proposal can be written before anything is computed: a file beside the target is opened at once, filled
+ * Makes sure a file can be written before anything is computed: a file beside the target is opened at once, filled
  * at the end and renamed. It goes when the program ends before that.
- * @param path what was typed after --pdf
+ * @param path what was typed
+ * @param option the option it was typed after
  * @returns the way to write it
  * @throws InputProblem of code `usage` where nothing can be written there
  */
-export async function proposalTarget(path: string): Promise<ProposalTarget> {
+export async function proposalTarget(path: string, option = 'pdf'): Promise<ProposalTarget> {
   const unfinished = join(dirname(path), `.${basename(path)}.${process.pid}`);
-  const file = await writable(path, async () => {
+  const file = await writable({ path, option }, async () => {
     if ((await stat(path).catch(() => null))?.isDirectory()) throw Object.assign(new Error(path), { code: 'EISDIR' });
     return open(unfinished, 'wx');
   });
@@ -26,7 +27,7 @@ export async function proposalTarget(path: string): Promise<ProposalTarget> {
   process.once('exit', remove);
   return {
     async write(bytes) {
-      await writable(path, async () => {
+      await writable({ path, option }, async () => {
         await file.writeFile(bytes);
         await file.sync();
         await file.close();
@@ -37,11 +38,12 @@ export async function proposalTarget(path: string): Promise<ProposalTarget> {
   };
 }
 
-async function writable<T>(path: string, work: () => Promise<T>): Promise<T> {
+async function writable<T>({ path, option }: { path: string; option: string }, work: () => Promise<T>): Promise<T> {
   try {
     return await work();
   } catch (error) {
     if (!(error instanceof Error && 'code' in error)) throw error;
-    throw new InputProblem([usage('--pdf with a file that can be written', `${JSON.stringify(path)} (${error.code})`)]);
+    const expected = `--${option} with a file that can be written`;
+    throw new InputProblem([usage(expected, `${JSON.stringify(path)} (${error.code})`)]);
   }
 }

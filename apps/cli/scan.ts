@@ -4,10 +4,10 @@ import { InputProblem, scanSite, siteNetlist } from '#libs/engine/index.js';
 import { scanReport } from '#libs/present/scan-report.js';
 import type { CommandLine } from './command.js';
 import { usage } from './command-line.js';
-import { readJson } from './input-file.js';
 import { writeNetlists } from './netlist-files.js';
 import { say, write, writeJson } from './output.js';
 import { inFile } from './refused-file.js';
+import { readSiteDocument } from './site-document.js';
 
 const DEFAULT_ORDERS = '1:50:0.02';
 const MOST_ORDERS = 100_000;
@@ -21,7 +21,7 @@ export async function run(line: CommandLine): Promise<number> {
   const place = { ...readLevel(line.values.get('level')), ...readCorner(line.values.get('corner')) };
   const netlist = line.values.get('netlist');
   const { levels, netlists } = await inFile(line.operand, async () => {
-    const site = await readSiteWithMathjs(await readJson(line.operand));
+    const site = await readSiteWithMathjs(await readSiteDocument(line.operand));
     return {
       levels: scanSite(site, { ...place, ordersH: asked ?? readOrders(DEFAULT_ORDERS) }).levels,
       netlists:

@@ -2,6 +2,9 @@ import type { INestApplication } from '@nestjs/common';
 import type { OpenAPIObject } from '@nestjs/swagger';
 import { routesOf } from './declared-routes.js';
 import { ANSWER_SCHEMAS, OPEN_API_PARTS } from './open-api-parts.js';
+import { REVIEW_PARTS, REVIEW_SCHEMAS } from './review/review-api.js';
+
+const PARTS = { ...OPEN_API_PARTS, ...REVIEW_PARTS };
 
 type Operation = { summary?: string; parameters?: object[]; requestBody?: object; responses: Record<string, object> };
 
@@ -31,15 +34,19 @@ async function describeRoutes(app: INestApplication): Promise<OpenAPIObject> {
     .setVersion('1')
     .build();
   const document = SwaggerModule.createDocument(app, about);
-  document.components = { ...document.components, schemas: { ...document.components?.schemas, ...ANSWER_SCHEMAS } };
+  document.components = {
+    ...document.components,
+    schemas: { ...document.components?.schemas, ...ANSWER_SCHEMAS, ...REVIEW_SCHEMAS },
+  };
   for (const { method, path, declared } of routesOf(app)) {
     const template = path.replace(/:(\w+)/g, '{$1}');
     const item = document.paths[template] as Record<string, Operation> | undefined;
     const operation = item?.[method.toLowerCase()];
     if (operation === undefined) continue;
-    const { parameters = [], responses, ...part } = OPEN_API_PARTS[`${method.toLowerCase()} ${template}`] ?? {};
+    const { parameters = [], responses, ...part } = PARTS[`${method.toLowerCase()} ${template}`] ?? {};
     Object.assign(operation, part, {
       summary: declared?.does ?? '',
+      ...(declared?.role ? { description: `Needs the role ${declared.role}, or one that may do more.` } : {}),
       parameters: [...(operation.parameters ?? []), ...parameters],
       responses: { ...(responses ?? operation.responses), default: REFUSED },
     });

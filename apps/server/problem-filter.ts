@@ -3,9 +3,11 @@ import { type ArgumentsHost, Catch, type ExceptionFilter, HttpException } from '
 import type { FastifyReply } from 'fastify';
 import { type ProblemJson, problemJson } from '#libs/contract/error-body.js';
 import { InputProblem, type ProblemCode } from '#libs/engine/index.js';
+import { StaleVersion } from '#libs/store/stale-version.js';
 import { QuestionWithOffer } from './records/question-with-offer.js';
 import { RefusedRequest } from './refused-request.js';
 import type { ServerLog } from './server-log.js';
+import { tagOf } from './sites/version-tag.js';
 
 /** Answers every error as application/problem+json; a fault of ours is logged and not told. */
 @Catch()
@@ -21,6 +23,7 @@ export class ProblemFilter implements ExceptionFilter {
     const problem = describeError(error);
     if (problem.status >= 500) this.#log.fault(error);
     if (reply.sent || reply.raw.headersSent) return;
+    if (problem.versions !== undefined) reply.header('etag', tagOf(problem.versions.current));
     reply.status(problem.status).type('application/problem+json').send(JSON.stringify(problem));
   }
 }
@@ -34,6 +37,9 @@ export function describeError(error: unknown): ProblemJson {
   if (error instanceof StoredProblem) return error.problem;
   if (error instanceof RefusedRequest) return { ...problemJson(error), status: error.status, title: error.title };
   if (error instanceof QuestionWithOffer) return { ...problemJson(error), offered: error.offered };
+  if (error instanceof StaleVersion) {
+    return { ...problemJson(error), versions: { seen: error.seen, current: error.current } };
+  }
   if (error instanceof InputProblem) return problemJson(error);
   const status = statusOf(error);
   if (status !== null && status < 500) return refusal(status, (error as Error).message);

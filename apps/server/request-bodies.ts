@@ -1,8 +1,11 @@
-import type { FastifyInstance } from 'fastify';
+import type { FastifyInstance, FastifyRequest } from 'fastify';
 import { RefusedRequest } from './refused-request.js';
 
-const UPLOADS = /\/records(\/:recordId\/revisions)?$/;
-const FILE_TYPES = ['text/csv', 'application/octet-stream'];
+const UPLOADS = /\/records(\/:recordId\/revisions)?$|^\/api\/(verify|site-imports)$/;
+/** Pages that work without scripts send forms; nothing else takes them. */
+const FORMS = /^\/(sign-in|sign-out|people|account)(\/|$)/;
+const FORM_TYPE = 'application/x-www-form-urlencoded';
+const FILE_TYPES = ['text/csv', 'application/octet-stream', 'application/pdf'];
 
 /**
  * Reads bodies as JSON, on the routes that take files as files, and refuses every other kind.
@@ -21,13 +24,22 @@ export function refuseOtherBodies(fastify: FastifyInstance): void {
     if (UPLOADS.test(request.routeOptions.url ?? '')) done(null, payload);
     else done(otherType('application/json'));
   });
+  fastify.addContentTypeParser(FORM_TYPE, { parseAs: 'string', bodyLimit: 10_000 }, (request, text, done) => {
+    if (FORMS.test(request.routeOptions.url ?? '')) done(null, Object.fromEntries(new URLSearchParams(String(text))));
+    else done(otherType('application/json'));
+  });
   fastify.addHook('preValidation', async (request) => {
-    const isUpload = UPLOADS.test(request.routeOptions.url ?? '') && request.method === 'POST';
+    const isUpload = takesFile(request);
     const type = request.headers['content-type'] ?? 'nothing';
     const isFile = request.isMultipart() || FILE_TYPES.some((known) => type.startsWith(known));
     if (isUpload && !isFile) throw otherType(`multipart/form-data, ${FILE_TYPES.join(' or ')}`);
     if (!isUpload && isFile) throw otherType('application/json');
   });
+}
+
+/** Whether the body of a request is a file, or a form with one. */
+export function takesFile({ routeOptions, method }: FastifyRequest): boolean {
+  return UPLOADS.test(routeOptions.url ?? '') && method === 'POST';
 }
 
 /** JSON.parse, but a key that would reach an object's prototype is refused rather than dropped. */

@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { readSettings } from './settings.js';
+import { isLocal, readSettings } from './settings.js';
 
 describe('the settings', () => {
   it('are the local ones where nothing is said', () => {
@@ -12,9 +12,21 @@ describe('the settings', () => {
     expect(readSettings({ DB_URL: url, DATA_DIR: '/data' })).toMatchObject({ dbUrl: url, spoolDir: '/data/spool' });
   });
 
+  const reached: [Record<string, string>, boolean, string][] = [
+    [{}, true, 'the default'],
+    [{ HOST: '::1' }, true, 'the same in the newer protocol'],
+    [{ HOST: '0.0.0.0' }, false, 'every network'],
+    [{ HOST: '192.168.1.4' }, false, 'a local network is not localhost'],
+    [{ ORIGIN: 'https://plans.example.org' }, false, 'something before the server lets others through'],
+  ];
+
+  it.each(reached)('with %j are for this machine alone: %s (%s)', (env, local) => {
+    expect(isLocal(readSettings(env))).toBe(local);
+  });
+
   const wrong: [Record<string, string>, RegExp, string][] = [
-    [{ HOST: '0.0.0.0' }, /no accounts yet/, 'nobody else may reach a server without accounts'],
-    [{ HOST: '192.168.1.4' }, /no accounts yet/, 'a local network is not localhost'],
+    [{ ORIGIN: 'plans.example.org' }, /ORIGIN must be a scheme and a name/, 'without a scheme nobody knows of https'],
+    [{ ORIGIN: 'https://plans.example.org/x' }, /ORIGIN must be/, 'a path is no origin'],
     [{ PORT: '70000' }, /PORT must be a whole number/, 'there are 65 536 ports'],
     [{ PORT: '3000x' }, /PORT must be/, 'a number with a tail is not that number'],
     [{ DEMO: 'yes' }, /DEMO must be one of on, off/, 'a word that is not on the list is not guessed at'],

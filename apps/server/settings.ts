@@ -4,6 +4,8 @@ import { join, resolve } from 'node:path';
 export interface Settings {
   port: number;
   host: string;
+  /** scheme and name people reach the server by, where something stands before it; null where nothing does */
+  origin: string | null;
   /** where sites, records and plans are kept; see libs/store */
   dbUrl: string;
   /** uploads are spooled here before they are read */
@@ -18,9 +20,14 @@ export interface Settings {
 const LOCAL_HOSTS = ['127.0.0.1', 'localhost', '::1'];
 const LOG_LEVELS = ['fatal', 'error', 'warn', 'info', 'debug', 'silent'];
 
+/** Whether nobody but this machine reaches the server. */
+export function isLocal({ host, origin }: Pick<Settings, 'host' | 'origin'>): boolean {
+  return LOCAL_HOSTS.includes(host) && origin === null;
+}
+
 /**
  * Reads the settings from environment variables.
- * @param env PORT, HOST, DATA_DIR, DB_URL, UPLOAD_MAX_MB, LOG_LEVEL, DEMO; each may be absent
+ * @param env PORT, HOST, ORIGIN, DATA_DIR, DB_URL, UPLOAD_MAX_MB, LOG_LEVEL, DEMO; each may be absent
  * @throws Error naming every variable that is wrong
  */
 export function readSettings(env: Record<string, string | undefined>): Settings {
@@ -41,17 +48,15 @@ export function readSettings(env: Record<string, string | undefined>): Settings 
   const settings: Settings = {
     port: number('PORT', 3000, 65_535),
     host: env.HOST ?? '127.0.0.1',
+    origin: env.ORIGIN ?? null,
     dbUrl: env.DB_URL ?? `sqlite:${join(dataDir, 'varwright.sqlite')}`,
     spoolDir: join(dataDir, 'spool'),
     uploadBytes: number('UPLOAD_MAX_MB', 100, 2000) * 1_000_000,
     logLevel: word('LOG_LEVEL', 'info', LOG_LEVELS),
     demo: word('DEMO', 'on', ['on', 'off']) === 'on',
   };
-  if (!LOCAL_HOSTS.includes(settings.host)) {
-    faults.push(
-      `HOST must be ${LOCAL_HOSTS.join(', ')}, found "${settings.host}": there are no accounts yet, ` +
-        'so whoever reaches the server could read and change everything',
-    );
+  if (settings.origin !== null && !/^https?:\/\/[a-z0-9.-]+(:\d{1,5})?$/.test(settings.origin)) {
+    faults.push(`ORIGIN must be a scheme and a name such as https://plans.example.org, found "${settings.origin}"`);
   }
   if (faults.length > 0) throw new Error(faults.join('\n'));
   return settings;

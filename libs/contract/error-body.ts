@@ -28,6 +28,8 @@ export interface ProblemJson {
   questions?: readonly QuestionAsked[];
   /** answers kept for files with the same header, which may settle the questions */
   offered?: readonly { id: string; name: string }[];
+  /** what a stale change had seen, and what stands */
+  versions?: { seen: number; current: number };
 }
 
 /** HTTP status of an input problem, by the code of its first problem; a fault of ours is 500. */

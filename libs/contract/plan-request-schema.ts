@@ -6,6 +6,12 @@ export const planRequestSchema = z
   .strictObject({
     recordId: label(36).optional().describe('the load record to plan with; absent, the latest of the site'),
     author: label(200).optional().describe('printed as "prepared by"'),
+    paper: z.enum(['A4', 'Letter']).optional().describe('sheet of the proposal, A4 where nothing is said'),
+    logo: z
+      .base64()
+      .max(350_000)
+      .optional()
+      .describe('the site’s logo for the proposal: a PNG or JPEG file of at most 262 144 bytes and 2 000 000 pixels'),
     reason: label(2000).optional().describe('why this revision is made'),
   })
   .meta({ id: 'PlanRequest' });

@@ -67,13 +67,13 @@ export function whole(min: number, max: number) {
   return z.number().multipleOf(1).min(min).max(max).meta({ type: 'integer' });
 }
 
-/** A word or two, without control characters. */
+/** Something to be seen: fillers and the empty braille cell count as letters or signs and show nothing. */
+const SHOWS = String.raw`(?![\u115f\u1160\u3164\uffa0\u2800])[\p{L}\p{N}\p{P}\p{S}]`;
+const LABEL = new RegExp(String.raw`^(?=.*${SHOWS})[^\p{Cc}\p{Cs}]*$`, 'u');
+
+/** A word or two that show something, without control characters. */
 export function label(longest = 120) {
-  return z
-    .string()
-    .min(1)
-    .max(longest)
-    .regex(/^[^\p{Cc}\p{Cs}]*$/u, { error: 'text without control characters' });
+  return z.string().min(1).max(longest).regex(LABEL, { error: 'text that shows, without control characters' });
 }
 
 /** A list of `min` to `max` entries. */

@@ -1,25 +1,20 @@
-import { isCim, readCim } from './cim/read-cim.js';
 import { readCsv } from './csv/read-csv.js';
-import { isEspi, readEspi } from './espi/read-espi.js';
+import { isCim, isEspi, isMscons, isNem12, isParquet, isProfileReadout, isXlsx } from './format-starts.js';
 import type { MeterFormat } from './meter-format.js';
-import { isMscons, readMscons } from './mscons/read-mscons.js';
-import { isNem12 } from './nem12/nem12-records.js';
-import { readNem12 } from './nem12/read-nem12.js';
-import { isParquet, readParquet } from './parquet/read-parquet.js';
-import { isProfileReadout, readProfileReadout } from './profile-readout/read-profile-readout.js';
 import { isQuadrantRows } from './quadrant-rows/quadrant-line.js';
-import { readQuadrantRows } from './quadrant-rows/read-quadrant-rows.js';
-import { isXlsx, readXlsx } from './xlsx/read-xlsx.js';
 import { xmlStart } from './xml/xml-start.js';
 
-/** Every format that is read, in the order in which a file is tried against them; delimited text takes what is left. */
+/**
+ * Every format that is read, in the order in which a file is tried against them; delimited text takes what is left. A
+ * reader is loaded when a file is its own: together they take longer to load than most files to read.
+ */
 export const FORMATS: readonly MeterFormat[] = [
   {
     name: 'nem12',
     title: 'NEM12 interval meter data',
     described: ['AEMO, Meter Data File Format Specification NEM12 & NEM13, version 1.06, 1 December 2017'],
     recognises: isNem12,
-    read: readNem12,
+    read: async (bytes, options) => (await import('./nem12/read-nem12.js')).readNem12(bytes, options),
   },
   {
     name: 'quadrant-rows',
@@ -29,7 +24,8 @@ export const FORMATS: readonly MeterFormat[] = [
       'IEC 62056-6-1, value group C, 1 and 2 (active energy), 5 to 8 (reactive energy of quadrants I to IV)',
     ],
     recognises: isQuadrantRows,
-    read: readQuadrantRows,
+    read: async (bytes, options) =>
+      (await import('./quadrant-rows/read-quadrant-rows.js')).readQuadrantRows(bytes, options),
   },
   {
     name: 'mscons',
@@ -40,7 +36,7 @@ export const FORMATS: readonly MeterFormat[] = [
       'IEC 62056-61:2006, Object identification system (OBIS)',
     ],
     recognises: isMscons,
-    read: readMscons,
+    read: async (bytes, options) => (await import('./mscons/read-mscons.js')).readMscons(bytes, options),
   },
   {
     name: 'profile-readout',
@@ -51,21 +47,22 @@ export const FORMATS: readonly MeterFormat[] = [
       'IEC 62056-61:2006, Object identification system (OBIS)',
     ],
     recognises: isProfileReadout,
-    read: readProfileReadout,
+    read: async (bytes, options) =>
+      (await import('./profile-readout/read-profile-readout.js')).readProfileReadout(bytes, options),
   },
   {
     name: 'xlsx',
     title: 'Workbook with a sheet of rows under a header',
     described: ['ECMA-376 / ISO/IEC 29500-1, Office Open XML File Formats: SpreadsheetML, and part 2, Open Packaging'],
     recognises: isXlsx,
-    read: readXlsx,
+    read: async (bytes, options) => (await import('./xlsx/read-xlsx.js')).readXlsx(bytes, options),
   },
   {
     name: 'parquet',
     title: 'Parquet with named columns',
     described: ['Apache Parquet file format specification, https://parquet.apache.org/docs/file-format/'],
     recognises: isParquet,
-    read: readParquet,
+    read: async (bytes, options) => (await import('./parquet/read-parquet.js')).readParquet(bytes, options),
   },
   {
     name: 'cim-meter-readings',
@@ -74,7 +71,7 @@ export const FORMATS: readonly MeterFormat[] = [
       'IEC 61968-9:2013, Interfaces for meter reading and control; its code lists as the CIM17 class model prints them, the order of the 18 codes from memory',
     ],
     recognises: isCim,
-    read: readCim,
+    read: async (bytes, options) => (await import('./cim/read-cim.js')).readCim(bytes, options),
   },
   {
     name: 'espi',
@@ -84,7 +81,7 @@ export const FORMATS: readonly MeterFormat[] = [
       'RFC 4287, The Atom Syndication Format, https://www.rfc-editor.org/rfc/rfc4287',
     ],
     recognises: isEspi,
-    read: readEspi,
+    read: async (bytes, options) => (await import('./espi/read-espi.js')).readEspi(bytes, options),
   },
   {
     name: 'csv',

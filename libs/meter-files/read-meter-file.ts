@@ -1,5 +1,6 @@
 import { InputProblem } from '#libs/engine/index.js';
 import { FORMATS } from './formats.js';
+import { isKeptRecord, readKeptRecord } from './kept-record/read-kept-record.js';
 import { MeterBytes } from './meter-bytes.js';
 import type { MeterFormat, MeterReading, ReadOptions } from './meter-format.js';
 
@@ -18,6 +19,7 @@ export async function readMeterFile(
 ): Promise<MeterReading> {
   const bytes = await MeterBytes.open(source, options);
   try {
+    if (isKeptRecord(bytes.head)) return await readKeptRecord(bytes);
     return await formatOf(bytes.head, options).read(bytes, options);
   } finally {
     await bytes.close();

@@ -1,4 +1,4 @@
-import type { BankOutcome, DeviceName, DeviceRow, DeviceState } from '#libs/engine/index.js';
+import type { DeviceName, DeviceRow, DeviceState } from '#libs/engine/index.js';
 import { formatNumber, formatQuantity, GAP } from './format-number.js';
 
 /** How a device stands, as a person reads it. */
@@ -156,10 +156,10 @@ export interface DeviceWords {
 
 /**
  * The table of devices in words.
- * @param outcome the plan or judgement
+ * @param outcome the plan or judgement, or as much of it as holds the devices
  * @returns one entry a row, in the engine's order
  */
-export function deviceTable({ result }: BankOutcome): DeviceWords[] {
+export function deviceTable({ result }: { result: { devices: readonly DeviceRow[] } }): DeviceWords[] {
   const groups = new Set(result.devices.flatMap(({ group }) => (group === null ? [] : [group])));
   return result.devices.map((row) => deviceWords(row, groups.size > 1));
 }

@@ -1,6 +1,6 @@
 import { type Corner, type Duty, NEAR_RATIO } from '#libs/engine/index.js';
 import type { BarFigure } from './bar-figure.js';
-import { dutyName } from './figure-words.js';
+import { dutyName as fullName } from './figure-words.js';
 import { formatApart, formatNumber, formatQuantity, GAP } from './format-number.js';
 import { verdictWords } from './verdict-words.js';
 
@@ -13,6 +13,8 @@ const BROKEN_PCT = 125;
  * @returns one bar a row, gravest first, rows without a limit in the table alone
  */
 export function dutyBars(duties: readonly Duty[]): BarFigure {
+  const isOneGroup = duties.every(({ group }) => group === null || group === 0);
+  const dutyName = (duty: Duty): string => fullName(isOneGroup ? { ...duty, group: null } : duty);
   const judged = duties.filter((duty) => duty.ratio !== null);
   const worst = judged.reduce<Duty | null>((a, b) => (a === null || b.ratio! > a.ratio! ? b : a), null);
   const over = judged.filter(({ verdict }) => verdict === 'avoid').length;

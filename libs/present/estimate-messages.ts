@@ -3,7 +3,7 @@ import type { Messages } from './message.js';
 /** What a plan without a record says of itself. */
 export const ESTIMATE_MESSAGES: Messages = {
   'estimate.basis': {
-    level: 'to be accepted',
+    level: 'blocks issue',
     text: 'This is an estimate from {basis}, not from a meter’s record: the need within a day is not known.',
     consequence: 'Record the load for at least four weeks before the bank is ordered.',
   },

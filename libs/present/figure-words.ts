@@ -1,5 +1,5 @@
 import type { Duty, Figure } from '#libs/engine/index.js';
-import { formatNumber, GAP, MINUS } from './format-number.js';
+import { formatNumber, GAP, inPoints, MINUS } from './format-number.js';
 
 /** What a figure is called; `[*]` stands for a group's number. */
 const LABELS: Readonly<Record<string, string>> = {
@@ -12,6 +12,8 @@ const LABELS: Readonly<Record<string, string>> = {
   'estimate.equipment.neededKvar': 'need of the equipment list, estimated',
   'requirement.maxKvar': 'greatest need',
   'requirement.p99Kvar': 'need passed in 1 % of the record',
+  'requirement.p95Kvar': 'need passed in 5 % of the record',
+  'requirement.meanKvar': 'mean need',
   'network.shortCircuitMva.sourceMohm': 'reactance of the supply at the greatest fault level',
   'network.shortCircuitMva': 'fault level at the bus',
   'network.shortCircuitMinMva.sourceMohm': 'reactance of the supply at the least fault level',
@@ -32,6 +34,10 @@ const LABELS: Readonly<Record<string, string>> = {
   'inrush.stages[*].singlePeakA': 'inrush peak of a single stage',
   'inrush.stages[*].ontoBankPeakA': 'inrush peak onto the rest of the bank',
   'operation.lowestMonthPowerFactor': 'power factor of the lowest month with the bank',
+  'operation.totalSwitchings': 'switchings of all stages over the record',
+  'operation.shareInTargetPct': 'share of the intervals that hold the target',
+  'network.worstDistortionPct': 'voltage distortion of the worst level in its worst corner',
+  'network.distortionWithoutBankPct': 'voltage distortion with no stage in, worst corner',
   'operation.freedKva': 'apparent power freed at the peak',
   'loads.truePowerFactorAfter': 'true power factor at the peak with the bank',
   'devices.group[*].voltageChangePct': 'voltage change when a stage is switched',
@@ -109,6 +115,6 @@ export function workingOf(figure: Figure): string {
 
 /** Without gaps between thousands, so that the working is arithmetic for any calculator. */
 function plainNumber(value: number): string {
-  const text = formatNumber(value, 'working').replaceAll(GAP, '');
+  const text = inPoints(formatNumber(value, 'working')).replaceAll(GAP, '');
   return text.startsWith(MINUS) ? `(${text})` : text;
 }

@@ -1,4 +1,6 @@
-import type { Duty, EstimateOutcome, Outcome, Remark } from '#libs/engine/index.js';
+import type { Duty, EstimateResult, Remark, Result, Verdict } from '#libs/engine/index.js';
+import { remark } from '#libs/engine/index.js';
+import { effectWords } from './effect-words.js';
 import { dutyName } from './figure-words.js';
 import { formatApart, formatQuantity, GAP } from './format-number.js';
 import { FINDING_LEVELS, type FindingLevel } from './message.js';
@@ -6,27 +8,52 @@ import { messageOf, remarkConsequence, remarkSubject } from './remark-words.js';
 
 /** Something a reviewer has to know, with what it rests on and what follows. */
 export interface Finding {
+  /** code and place, unlike that of every other finding of the result */
+  id: string;
   level: FindingLevel;
+  code: string;
+  /** path into the site file of the field it concerns */
+  path: string | null;
   what: string;
-  /** with its unit, empty where there is none */
-  value: string;
-  limit: string;
+  value: number | null;
+  limit: number | null;
+  /** of value and limit */
+  unit: string;
+  /** empty where there is none */
   source: string;
   consequence: string;
 }
 
+/** A result before or after its words were filled in. */
+interface Judged {
+  result: Result | EstimateResult;
+}
+
 /**
- * The findings of an outcome, gravest first: reasons of the verdict, notes of the record, rows that have no limit.
- * @param outcome the plan or judgement
- * @returns findings in the order of their four levels
+ * The findings of an outcome, gravest first, in four strict levels. What is over a limit, a record that supports no bank and
+ * a plan outside what was computed block issue; what is near a limit and every assumption that would turn the verdict has
+ * to be accepted, each by itself; notes of the record and rows without a limit are to be noted; the rest informs.
+ * @param judged the plan or judgement
+ * @returns findings in the order of their levels, each with an id of its own
  */
-export function findings({ result }: Outcome | EstimateOutcome): Finding[] {
+export function findings({ result }: Judged): Finding[] {
   const all = [
     ...result.reasons.map(remarkFinding),
+    ...result.assumptions.filter(({ effect }) => effect?.changesVerdict === true).map(turningFinding),
     ...notJudgedFinding(result.duties),
     ...(result.record?.notes ?? []).map(remarkFinding),
   ];
-  return FINDING_LEVELS.flatMap((level) => all.filter((finding) => finding.level === level));
+  const complete = [...verdictFinding(result.verdict, all), ...all];
+  return apart(FINDING_LEVELS.flatMap((level) => complete.filter((finding) => finding.level === level)));
+}
+
+/**
+ * Whether nothing but a draft may be made of a plan.
+ * @param list its findings
+ * @returns those that block issue
+ */
+export function blocking(list: readonly Finding[]): Finding[] {
+  return list.filter(({ level }) => level === 'blocks issue');
 }
 
 /**
@@ -42,6 +69,18 @@ export function findingCount(list: readonly Finding[]): string {
   return parts.length === 0 ? 'none' : parts.join(', ');
 }
 
+/**
+ * Value and limit of a finding as they are printed: with more digits where rounding would hide that they differ.
+ * @param finding with numbers
+ * @returns both with their unit, empty where there is none
+ */
+export function findingNumbers({ value, limit, unit }: Finding): { value: string; limit: string } {
+  if (value === null) return { value: '', limit: '' };
+  if (limit === null) return { value: formatQuantity(value, unit, 'given'), limit: '' };
+  const shown = formatApart(value, limit);
+  return { value: `${shown.value}${GAP}${unit}`.trim(), limit: `${shown.limit}${GAP}${unit}`.trim() };
+}
+
 const WORDS = ['no', 'one', 'two', 'three', 'four', 'five', 'six', 'seven', 'eight', 'nine', 'ten', 'eleven', 'twelve'];
 
 /**
@@ -53,39 +92,75 @@ export function countWord(count: number): string {
   return WORDS[count] ?? String(count);
 }
 
-function remarkFinding(remark: Remark): Finding {
-  const { value, limit } = remark.values;
-  const unit = remark.unit ?? '';
-  const shown = { value: '', limit: '' };
-  if (typeof value === 'number' && typeof limit === 'number') {
-    const apart = formatApart(value, limit);
-    shown.value = `${apart.value}${GAP}${unit}`;
-    shown.limit = `${apart.limit}${GAP}${unit}`;
-  } else if (typeof value === 'number') shown.value = formatQuantity(value, unit, 'given');
+function remarkFinding(said: Remark): Finding {
+  const { value, limit } = said.values;
   return {
-    level: messageOf(remark.code)?.level ?? 'to be noted',
-    what: remarkSubject(remark),
-    ...shown,
-    source: remark.source ?? '',
-    consequence: remarkConsequence(remark),
+    id: idOf(said),
+    level: messageOf(said.code)?.level ?? 'to be noted',
+    code: said.code,
+    path: said.path,
+    what: remarkSubject(said),
+    value: typeof value === 'number' ? value : null,
+    limit: typeof value === 'number' && typeof limit === 'number' ? limit : null,
+    unit: said.unit ?? '',
+    source: said.source ?? '',
+    consequence: remarkConsequence(said),
   };
+}
+
+/** An assumption that would turn the verdict, had it been another value that practice meets. */
+function turningFinding(assumption: Remark): Finding {
+  const { effect } = assumption;
+  return {
+    ...remarkFinding(assumption),
+    level: 'to be accepted',
+    value: null,
+    limit: null,
+    unit: '',
+    consequence: `${effect === null ? '' : `${effectWords(effect)}. `}${remarkConsequence(assumption)}`,
+  };
+}
+
+/** The verdict itself, where nothing that was found says it. */
+function verdictFinding(verdict: Verdict, found: readonly Finding[]): Finding[] {
+  const has = (...levels: FindingLevel[]) => found.some(({ level }) => levels.includes(level));
+  if (verdict === 'avoid' && !has('blocks issue')) return [remarkFinding(remark('verdict.avoid'))];
+  if (verdict === 'watch' && !has('blocks issue', 'to be accepted')) return [remarkFinding(remark('verdict.watch'))];
+  return [];
 }
 
 function notJudgedFinding(duties: readonly Duty[]): Finding[] {
   const open = duties.filter(({ verdict }) => verdict === null);
   if (open.length === 0) return [];
-  const names = open.map(dutyName).join('; ');
-  return [
-    {
-      level: 'to be noted',
-      what: `${open.length === 1 ? 'One row is' : `${countWord(open.length)} rows are`} not judged: ${names}.`.replace(
-        /^./,
-        (c) => c.toUpperCase(),
-      ),
-      value: '',
-      limit: '',
-      source: '',
-      consequence: 'Give the missing limit or the missing loads, or judge by hand.',
-    },
-  ];
+  return [remarkFinding(remark('limit.notJudged', { rows: open.length, duties: open.map(dutyName).join('; ') }))];
+}
+
+/** Values that say where a remark stands, not how much it found. */
+const PLACES = [
+  'duty',
+  'device',
+  'group',
+  'orderH',
+  'presentOrderH',
+  'levelKvar',
+  'quantity',
+  'bus',
+  'name',
+  'register',
+  'of',
+];
+
+function idOf({ code, path, values }: Remark): string {
+  const place = PLACES.flatMap((key) => (values[key] === undefined ? [] : [String(values[key])]));
+  return [code, ...(path === null ? [] : [path]), ...place].join(':');
+}
+
+/** The second and third of equal ids are counted. */
+function apart(list: readonly Finding[]): Finding[] {
+  const seen = new Map<string, number>();
+  return list.map((finding) => {
+    const count = (seen.get(finding.id) ?? 0) + 1;
+    seen.set(finding.id, count);
+    return count === 1 ? finding : { ...finding, id: `${finding.id}:${count}` };
+  });
 }

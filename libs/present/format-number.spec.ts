@@ -1,5 +1,15 @@
-import { describe, expect, it } from 'vitest';
-import { formatApart, formatNumber, formatQuantity, formatRange, formatShare, unitOfName } from './format-number.js';
+import { afterEach, describe, expect, it } from 'vitest';
+import {
+  formatApart,
+  formatNumber,
+  formatQuantity,
+  formatRange,
+  formatShare,
+  inPoints,
+  inShownMark,
+  setDecimalMark,
+  unitOfName,
+} from './format-number.js';
 
 describe('a number for people', () => {
   it.each([
@@ -84,5 +94,33 @@ describe('the unit a name ends in', () => {
     ['highestV', 'V'],
   ])('%s is in "%s"', (name, unit) => {
     expect(unitOfName(name)).toBe(unit);
+  });
+});
+
+describe('the decimal mark of the reader', () => {
+  afterEach(() => setDecimalMark('.'));
+
+  it('is the only thing that changes: thousands stay apart by a gap, so that no number reads two ways', () => {
+    setDecimalMark(',');
+    expect(formatNumber(37.333)).toBe('37,3');
+    expect(formatNumber(-1234.5, 'given')).toBe('\u22121\u00a0234,5');
+    expect(formatRange({ low: 0.95, high: 1.5 }, 'kV')).toBe('0,95–1,5\u00a0kV');
+    setDecimalMark('.');
+    expect(formatNumber(37.333)).toBe('37.3');
+  });
+
+  it('leaves a value and its limit as far apart as they were', () => {
+    const points = formatApart(100.04, 100);
+    setDecimalMark(',');
+    expect(formatApart(100.04, 100)).toEqual({ value: points.value.replace('.', ','), limit: points.limit });
+    expect(formatApart(0.9499, 0.95)).toEqual({ value: '0,9499', limit: '0,95' });
+  });
+
+  it('reaches numbers of a sentence made elsewhere, not the numbers of a version or a standard', () => {
+    const text = 'Engine 0.1.0: 1\u00a0234.5 kvar at 0.95, by IEC 61000-2-4:2002.';
+    expect(inShownMark(text)).toBe(text);
+    setDecimalMark(',');
+    expect(inShownMark(text)).toBe('Engine 0.1.0: 1\u00a0234,5 kvar at 0,95, by IEC 61000-2-4:2002.');
+    expect(inPoints('1\u00a0234,5')).toBe('1\u00a0234.5');
   });
 });

@@ -3,6 +3,38 @@ export const GAP = '\u00a0';
 /** U+2212 */
 export const MINUS = '\u2212';
 
+/** A decimal mark that readers know; thousands are apart by a gap in either case, so that no number reads two ways. */
+export type DecimalMark = '.' | ',';
+
+let shownMark: DecimalMark = '.';
+
+/**
+ * Chooses the decimal mark of everything printed from here on. A page does so once, before it shows anything; paper,
+ * terminal and files keep the point.
+ * @param mark the reader's
+ */
+export function setDecimalMark(mark: DecimalMark): void {
+  shownMark = mark;
+}
+
+/**
+ * A sentence that was put in words elsewhere, with the reader's decimal mark in its numbers.
+ * @param text printed with points
+ */
+export function inShownMark(text: string): string {
+  return shownMark === '.'
+    ? text
+    : text.replace(/(?<![\d.])(\d+(?:\u00a0\d{3})*)\.(?=\d+(?![\d.]))/g, `$1${shownMark}`);
+}
+
+/**
+ * A shown text with points for decimal marks again: for a file, or for arithmetic.
+ * @param text printed here
+ */
+export function inPoints(text: string): string {
+  return shownMark === '.' ? text : text.replace(/(?<=\d),(?=\d)/g, '.');
+}
+
 /** Digits a computed number is printed with; never fewer than its whole units. */
 const COMPUTED_DIGITS = 3;
 /** Digits of a number in a working, enough that the printed arithmetic gives the printed answer. */
@@ -68,7 +100,7 @@ function trimmed(text: string): string {
 function grouped(plain: string): string {
   const [whole = '', fraction] = plain.split('.');
   const apart = whole.replace(/\B(?=(\d{3})+$)/g, GAP);
-  return fraction === undefined ? apart : `${apart}.${fraction}`;
+  return fraction === undefined ? apart : `${apart}${shownMark}${fraction}`;
 }
 
 /**
@@ -108,7 +140,7 @@ export function formatApart(value: number, limit: number): { value: string; limi
   for (let digits = COMPUTED_DIGITS; digits <= WORKING_DIGITS; digits++) {
     const text = withDigits(value, digits);
     const shown = Number(Math.abs(value).toFixed(decimalsOf(text)));
-    const shownLimit = Number(limitText.replaceAll(GAP, '').replace(MINUS, '-'));
+    const shownLimit = Number(inPoints(limitText).replaceAll(GAP, '').replace(MINUS, '-'));
     if (exact || shown !== shownLimit) return { value: text, limit: limitText };
   }
   return { value: formatNumber(value, 'working'), limit: formatNumber(limit, 'working') };
@@ -121,7 +153,8 @@ function withDigits(value: number, digits: number): string {
 }
 
 function decimalsOf(text: string): number {
-  return text.includes('.') ? text.length - text.indexOf('.') - 1 : 0;
+  const at = text.indexOf(shownMark);
+  return at < 0 ? 0 : text.length - at - 1;
 }
 
 /**

@@ -48,6 +48,8 @@ export function phasors(outcome: Outcome, moment: Moment = worstMoment(outcome))
       // an exporting site's labels stand to the left of its arrows
       from: reach.left < 0 ? reach.left - 0.5 * reach.x : 0,
       to: reach.x * 1.3,
+      // the letter U stands at the arrow’s end
+      lastTick: reach.x * 1.12,
     }),
     y: within(linearAxis('lagging downwards', 'A', { least: reach.down, most: reach.up }, 4), {
       from: reach.down * 1.12,
@@ -61,8 +63,9 @@ export function phasors(outcome: Outcome, moment: Moment = worstMoment(outcome))
 }
 
 /** The same axis between ends that need not be round. */
-function within(axis: Axis, ends: { from: number; to: number }): Axis {
-  return { ...axis, ...ends, ticks: axis.ticks.filter(({ at }) => at >= ends.from && at <= ends.to) };
+function within(axis: Axis, ends: { from: number; to: number; lastTick?: number }): Axis {
+  const { from, to, lastTick = to } = ends;
+  return { ...axis, from, to, ticks: axis.ticks.filter(({ at }) => at >= from && at <= lastTick) };
 }
 
 /** The worst interval, or the one of greatest need where none misses the target. */

@@ -1,14 +1,20 @@
 import type { BankResult, EstimateResult, RecordSummary, Remark, Result } from '#libs/engine/index.js';
 import { figureInWords } from './figure-words.js';
+import { type Finding, findings } from './findings.js';
 import { remarkConsequence, remarkInWords } from './remark-words.js';
+import { type RulesEvaluated, rulesEvaluated } from './rules-evaluated.js';
+
+/** A result in words, with its findings by level and how many rules it was put to. */
+export type Worded<Judged> = Judged & { findings: Finding[]; rules: RulesEvaluated };
 
 /**
  * Fills the words of a result: the text of every remark, the label and working of every figure.
  * @param result from the engine
  * @returns a copy with words; numbers untouched
  */
-export function putInWords(result: Result): Result {
-  return { ...bankInWords(result), record: recordInWords(result.record) };
+export function putInWords(result: Result): Worded<Result> {
+  const worded = { ...bankInWords(result), record: recordInWords(result.record) };
+  return { ...worded, findings: findings({ result: worded }), rules: rulesEvaluated(worded) };
 }
 
 /**
@@ -16,9 +22,10 @@ export function putInWords(result: Result): Result {
  * @param result from the engine
  * @returns a copy with words; numbers untouched
  */
-export function putEstimateInWords(result: EstimateResult): EstimateResult {
+export function putEstimateInWords(result: EstimateResult): Worded<EstimateResult> {
   const { estimate } = result;
-  return { ...bankInWords(result), estimate: { ...estimate, refused: estimate.refused.map(remarkInWords) } };
+  const worded = { ...bankInWords(result), estimate: { ...estimate, refused: estimate.refused.map(remarkInWords) } };
+  return { ...worded, findings: findings({ result: worded }), rules: rulesEvaluated(worded) };
 }
 
 function bankInWords<T extends BankResult>(result: T): T {

@@ -5,6 +5,21 @@ const MET = '[, met with {levelKvar} connected][, fault level {faultLevelMva}][,
 
 /** Why a verdict is what it is. */
 export const REASON_MESSAGES: Messages = {
+  'verdict.avoid': {
+    level: 'blocks issue',
+    text: 'The bank is over a limit.',
+    consequence: 'Change the bank or the network until every limit is kept.',
+  },
+  'verdict.watch': {
+    level: 'to be accepted',
+    text: 'The bank is near a limit.',
+    consequence: 'Accept the margin, or change the bank.',
+  },
+  'limit.notJudged': {
+    level: 'to be noted',
+    text: '{rows:row is|rows are} not judged: {duties}.',
+    consequence: 'Give the missing limit or the missing loads, or judge by hand.',
+  },
   'limit.exceeded': {
     level: 'blocks issue',
     text: `Over its limit: {duty}${WHERE}, {value} against {limit}${MET}.`,

@@ -138,5 +138,5 @@ export function noonOfDayS(zone: ZoneTable, beginS: number, day: number): number
  * @returns one text a bound
  */
 export function legendOf(map: YearMap): string[] {
-  return map.bounds.map((bound) => formatNumber(bound));
+  return map.bounds.map((bound, at) => formatNumber(bound, at < map.bounds.length - 1 ? 'given' : 'computed'));
 }

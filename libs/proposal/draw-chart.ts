@@ -61,7 +61,8 @@ function drawWindows(paper: Paper, chart: Chart, { plot, atX }: PlotFrame): void
 
 /** Points of a series on the page, thinned to the columns of ink; null where the line breaks. */
 function points(series: Series, frame: PlotFrame, values: ArrayLike<number>): ([number, number] | null)[] {
-  const place = Array.from(series.x, (value) => (frame.atX(value) - frame.plot.x) * COLUMNS_PER_POINT);
+  const place = new Float64Array(series.x.length);
+  for (let i = 0; i < place.length; i++) place[i] = (frame.atX(series.x[i]!) - frame.plot.x) * COLUMNS_PER_POINT;
   return decimateColumns(place, values).map((i) => {
     const value = values[i]!;
     return Number.isNaN(value) ? null : [frame.atX(series.x[i]!), frame.atY(value)];

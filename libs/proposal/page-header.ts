@@ -4,7 +4,7 @@ import { formatMoment } from '#libs/present/local-stamp.js';
 import { plainName } from '#libs/present/plain-name.js';
 import { HAIR, INK, STROKE } from './ink.js';
 import { LABEL, leading, type Paper, STRONG } from './paper.js';
-import type { ProposalFrame } from './proposal-frame.js';
+import type { ProposalFrame, ProposalState } from './proposal-frame.js';
 import type { Line, Piece, Style } from './typesetter.js';
 
 const FIRST_BASELINE = 36;
@@ -13,12 +13,22 @@ const HEAD: Style = { ...STRONG, size: 9 };
 const PAGE_ROOM = 90;
 const HASH_ROOM = 215;
 
+/** What a paper of each state may be used for. */
+const STANDING: Record<ProposalState, string> = {
+  'draft, not reviewed': 'A draft is not for construction.',
+  'for review': 'Under review: not for construction.',
+  approved: 'Approved; what was accepted stands in section 2.',
+  superseded: 'Superseded: a later revision counts.',
+  withdrawn: 'Withdrawn: not for construction.',
+};
+
 /** The lines of the header, broken for the width, and where the page below it begins. */
 export interface SetHeader {
   title: Line[];
   window: Line[];
   hash: string;
   site: string;
+  note: string;
   /** top of what follows [pt] */
   contentTop: number;
 }
@@ -31,6 +41,7 @@ export function setHeader({ type, width }: Paper, frame: ProposalFrame, outcome:
     window: type.wrap([windowWords(outcome)], LABEL, width - HASH_ROOM),
     hash: `content ${hashInFours(frame.contentHash)}, engine ${frame.engineVersion}`,
     site: plainName(outcome.site.name),
+    note: STANDING[frame.state],
   };
   const titleEnd = FIRST_BASELINE + (set.title.length - 1) * leading(HEAD);
   return { ...set, contentTop: titleEnd + 26 + set.window.length * leading(LABEL) };
@@ -80,7 +91,7 @@ function drawHeader(paper: Paper, header: SetHeader, pageOf: string): void {
 function drawFooter(paper: Paper, header: SetHeader): void {
   const { type, doc, left, right } = paper;
   const y = doc.page.height - 36;
-  const note = 'A draft is not for construction.';
+  const { note } = header;
   const noteWidth = type.width([note], LABEL);
   doc.lineWidth(STROKE.hair).moveTo(left, y).lineTo(right, y).stroke(HAIR);
   // a name too long for the line stands in full on page 1

@@ -84,6 +84,11 @@ export class Paper {
     this.y = this.top;
   }
 
+  /** Begins a new page for what may go out as a sheet of its own. */
+  turnUnlessFresh(): void {
+    if (this.y > this.top) this.turn();
+  }
+
   /** Runs `fill` with its blocks inside a structure element. */
   within(tag: string, fill: () => void): void {
     const element = this.doc.struct(tag);

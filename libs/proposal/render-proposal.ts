@@ -1,8 +1,10 @@
 import { type EstimateOutcome, isEstimate, monthSpan, type Outcome } from '#libs/engine/index.js';
 import { plainName } from '#libs/present/plain-name.js';
+import { needIssuable } from './missing-parts.js';
 import { drawHeaders, setHeader } from './page-header.js';
 import { Paper, sheet } from './paper.js';
 import type { ProposalFrame } from './proposal-frame.js';
+import { readLogo } from './read-logo.js';
 import { drawAgeing } from './section-ageing.js';
 import { drawAssumptions, drawBasis } from './section-basis.js';
 import { drawCautions } from './section-cautions.js';
@@ -11,17 +13,23 @@ import { drawDecision } from './section-decision.js';
 import { drawEstimate, drawLeftOut } from './section-estimate.js';
 import { drawFindings } from './section-findings.js';
 import { drawHandCheck } from './section-hand-check.js';
+import { drawHistory } from './section-history.js';
 import { drawValidity } from './section-limits.js';
 import { drawLoad } from './section-load.js';
+import { drawMaintenance } from './section-maintenance.js';
+import { drawMaterials } from './section-materials.js';
 import { drawMeasured } from './section-measured.js';
 import { drawMethod } from './section-method.js';
 import { drawMoney } from './section-money.js';
 import { drawNetwork } from './section-network.js';
+import { drawOperatorPage } from './section-operator.js';
 import { drawReevaluation } from './section-reevaluation.js';
 import { drawSensitivity } from './section-sensitivity.js';
-import { drawSignatures } from './section-signatures.js';
+import { drawSettings } from './section-settings.js';
+import { drawAccepted, drawSignatures } from './section-signatures.js';
 import { drawSiteActions } from './section-site-actions.js';
 import { drawStages } from './section-stages.js';
+import { drawVerification } from './section-verification.js';
 
 export type { ProposalFrame } from './proposal-frame.js';
 
@@ -31,8 +39,12 @@ export type { ProposalFrame } from './proposal-frame.js';
  * @param outcome the plan or judgement, its result already put in words
  * @param frame number, revision, state, hash and sheet
  * @returns the file's bytes
+ * @throws InputProblem where the logo can't be used, or the paper is to be more than a draft and a part is empty or a finding
+ * blocks issue
  */
 export async function renderProposal(outcome: Outcome | EstimateOutcome, frame: ProposalFrame): Promise<Uint8Array> {
+  needIssuable(outcome, frame);
+  const logo = frame.logo == null ? null : readLogo(frame.logo);
   const doc = await openDocument(outcome, frame);
   const chunks: Buffer[] = [];
   const finished = new Promise<void>((resolve, reject) => {
@@ -43,10 +55,11 @@ export async function renderProposal(outcome: Outcome | EstimateOutcome, frame: 
   const paper = new Paper(doc);
   const header = setHeader(paper, frame, outcome);
   paper.begin(header.contentTop);
-  drawDecision(paper, outcome);
+  drawDecision(paper, outcome, logo);
   drawReevaluation(paper, outcome, frame.reevaluation);
   drawSignatures(paper, frame);
   drawFindings(paper, outcome);
+  drawAccepted(paper, frame);
   drawBasis(paper, outcome);
   drawAssumptions(paper, outcome);
   if (isEstimate(outcome)) drawEstimate(paper, outcome);
@@ -64,6 +77,12 @@ export async function renderProposal(outcome: Outcome | EstimateOutcome, frame: 
   drawHandCheck(paper, outcome);
   drawSiteActions(paper, outcome);
   drawCautions(paper, outcome);
+  drawSettings(paper, outcome);
+  drawOperatorPage(paper, outcome);
+  drawMaintenance(paper, outcome);
+  drawMaterials(paper, outcome);
+  drawHistory(paper, outcome, frame);
+  drawVerification(paper, outcome, frame);
   drawHeaders(paper, header);
   paper.end();
   doc.end();

@@ -1,10 +1,14 @@
 import type { BankOutcome } from '#libs/engine/index.js';
+import { assumptionSource } from '#libs/present/assumption-source.js';
 import { basisOfDesign, RULE_SET_WORDS } from '#libs/present/basis-of-design.js';
+import { effectWords } from '#libs/present/effect-words.js';
 import { formatNumber, formatQuantity } from '#libs/present/format-number.js';
 import { plainName } from '#libs/present/plain-name.js';
 import { remarkConsequence } from '#libs/present/remark-words.js';
+import { SOFT } from './ink.js';
 import { NOTE, type Paper } from './paper.js';
-import { drawTable } from './table.js';
+import { type Cell, drawTable } from './table.js';
+import { NEW_LINE } from './typesetter.js';
 
 /** Documents with their editions, and what each was used for. */
 export function drawBasis(paper: Paper, outcome: BankOutcome): void {
@@ -77,12 +81,25 @@ export function drawAssumptions(paper: Paper, outcome: BankOutcome): void {
     return;
   }
   const columns = [
-    { head: 'taken', share: 44 },
-    { head: 'field', share: 26 },
+    { head: 'taken, and its field', share: 42 },
+    { head: 'source', share: 22 },
+    { head: 'effect if wrong', share: 30 },
     { head: 'what settles it', share: 34 },
   ];
-  const rows = assumptions.map((one) => [one.text, plainName(one.path ?? ''), remarkConsequence(one)]);
-  drawTable(paper, columns, rows, { style: { ...NOTE, ink: '#000000', size: 9.2 } });
+  const rows = assumptions.map((one): Cell[] => [
+    [one.text, NEW_LINE, { text: plainName(one.path ?? ''), ink: SOFT, size: 8.2 }],
+    assumptionSource(one),
+    one.effect === null ? '–' : effectWords(one.effect),
+    remarkConsequence(one),
+  ]);
+  drawTable(paper, columns, rows, { style: { ...NOTE, ink: '#000000', size: 9 }, padding: 2.8, after: 5 });
+  paper.paragraph(
+    [
+      'Effect: the row that moves most, from one end to the other of what practice meets. A dash stands where a value was not moved: ' +
+        'it enters no limit, or stands at the severe end already.',
+    ],
+    { style: NOTE },
+  );
   drawUnderstood(paper, outcome);
 }
 

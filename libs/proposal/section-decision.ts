@@ -16,24 +16,40 @@ import { setSingleLine } from './draw-single-line.js';
 import { HAIR, INK, PAPER, SOFT, STROKE } from './ink.js';
 import { drawVerdictMark } from './marks.js';
 import { LABEL, leading, type Paper, rise, STRONG } from './paper.js';
+import type { Logo } from './read-logo.js';
 import { BODY, type Line, type Style } from './typesetter.js';
 
 /** A long name takes a smaller size, so that the decision stays on the first page. */
 const TITLES: Style[] = [17, 13, 10.5].map((size) => ({ ...STRONG, size }));
 const HEADLINE: Style = { ...STRONG, size: 14.5 };
+/** Room for a site's logo [pt]. */
+const LOGO_BOX = { width: 120, height: 40 };
 const PADDING = 14;
 const BAND = 24;
 /** Share of the box that the sentence takes; the figures stand beside it. */
 const SENTENCE_SHARE = 0.43;
 
 /** Title and decision box: what is proposed, how it was judged, what it does not cover, and the single-line diagram. */
-export function drawDecision(paper: Paper, outcome: Outcome | EstimateOutcome): void {
+export function drawDecision(paper: Paper, outcome: Outcome | EstimateOutcome, logo: Logo | null): void {
   const { site } = outcome;
   const title = [`Power-factor correction for ${plainName(site.name)}`];
-  const style = TITLES.find((one) => paper.type.wrap(title, one, paper.width).length <= 3) ?? TITLES.at(-1)!;
-  paper.paragraph(title, { style, tag: 'H1', after: 2 });
-  paper.paragraph([boardWords(outcome)], { style: { ...BODY, ink: SOFT }, after: 10 });
+  const room = logo === null ? null : drawLogo(paper, logo, plainName(site.name));
+  const width = paper.width - (room === null ? 0 : room.width + 16);
+  const style = TITLES.find((one) => paper.type.wrap(title, one, width).length <= 3) ?? TITLES.at(-1)!;
+  paper.paragraph(title, { style, width, tag: 'H1', after: 2 });
+  paper.paragraph([boardWords(outcome)], { style: { ...BODY, ink: SOFT }, width, after: 10 });
+  if (room !== null) paper.y = Math.max(paper.y, room.foot + 10);
   drawBox(paper, outcome);
+}
+
+/** At the right of the title, within a fixed box. */
+function drawLogo(paper: Paper, logo: Logo, site: string): { width: number; foot: number } {
+  const scale = Math.min(LOGO_BOX.width / logo.width, LOGO_BOX.height / logo.height);
+  const [width, height] = [logo.width * scale, logo.height * scale];
+  const [x, y] = [paper.right - width, paper.y + 2];
+  const draw = () => void paper.doc.image(logo.bytes, x, y, { width, height });
+  paper.tagged('Figure', draw, { alt: `Logo of ${site}`, bbox: [x, y, x + width, y + height] });
+  return { width, foot: y + height };
 }
 
 function boardWords({ site }: BankOutcome): string {

@@ -1,6 +1,8 @@
 import type { EstimateOutcome, Outcome } from '#libs/engine/index.js';
-import { type Finding, findingCount, findings } from '#libs/present/findings.js';
+import { blocking, type Finding, findingCount, findingNumbers, findings } from '#libs/present/findings.js';
 import type { FindingLevel } from '#libs/present/message.js';
+import { rulesEvaluated, rulesWords } from '#libs/present/rules-evaluated.js';
+import { blankCell } from './blank-cell.js';
 import { INK, PAPER, SOFT, STROKE } from './ink.js';
 import { NOTE, type Paper } from './paper.js';
 import { type Cell, type Column, drawTable } from './table.js';
@@ -20,8 +22,9 @@ const COLUMNS: Column[] = [
 export function drawFindings(paper: Paper, outcome: Outcome | EstimateOutcome): void {
   const list = findings(outcome);
   paper.heading('2', `Findings: ${findingCount(list)}`, { keep: 120 });
+  const evaluated = rulesWords(rulesEvaluated(outcome.result));
   if (list.length === 0) {
-    paper.paragraph(['No rule asked for a remark.']);
+    paper.paragraph([`No rule was triggered. ${evaluated}`]);
     return;
   }
   drawTable(
@@ -30,19 +33,14 @@ export function drawFindings(paper: Paper, outcome: Outcome | EstimateOutcome): 
     list.map((finding) => findingRow(paper, finding)),
     { style: STYLE, gutter: 10, after: 5 },
   );
-  const { duties } = outcome.result;
-  const open = duties.filter(({ verdict }) => verdict === null).length;
-  const left = open === 0 ? 'none was left unjudged' : `${open} could not be judged`;
-  const judged =
-    duties.length === 0
-      ? 'No row was held against a limit.'
-      : `${duties.length - open} rows were held against a limit; ${left}.`;
-  paper.paragraph([judged], { style: NOTE });
+  const blocks = blocking(list).length > 0 ? ' While a finding blocks issue, this paper stays a draft.' : '';
+  paper.paragraph([`${evaluated}${blocks}`], { style: NOTE });
 }
 
 function findingRow(paper: Paper, finding: Finding): Cell[] {
-  const { level, what, value, limit, source, consequence } = finding;
-  const accepted = level === 'to be accepted' || level === 'blocks issue' ? signLine(paper) : '';
+  const { level, what, source, consequence } = finding;
+  const { value, limit } = findingNumbers(finding);
+  const accepted = level === 'to be accepted' ? blankCell(paper, -1) : '';
   const named: Piece[] = source === '' ? [what] : [what, NEW_LINE, { text: source, ink: SOFT, size: 8.4 }];
   return [levelCell(paper, level), named, value, limit, consequence, accepted];
 }
@@ -68,20 +66,6 @@ function levelCell(paper: Paper, level: FindingLevel): Cell {
           .lineWidth(STROKE.tick)
           .rect(...box)
           .stroke(INK);
-    },
-  };
-}
-
-function signLine(paper: Paper): Cell {
-  return {
-    pieces: [''],
-    inset: 0,
-    draw: ({ x, y, width, height }) => {
-      paper.doc
-        .lineWidth(STROKE.tick)
-        .moveTo(x, y + height - 1)
-        .lineTo(x + width, y + height - 1)
-        .stroke(INK);
     },
   };
 }

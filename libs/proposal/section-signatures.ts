@@ -1,7 +1,9 @@
+import { formatDate } from '#libs/present/local-stamp.js';
 import { INK, SOFT, STROKE } from './ink.js';
-import { LABEL, leading, type Paper, rise } from './paper.js';
+import { LABEL, leading, NOTE, type Paper, rise } from './paper.js';
+import type { PrintedReview } from './printed-review.js';
 import type { ProposalFrame } from './proposal-frame.js';
-import { BODY, type Style } from './typesetter.js';
+import { BODY, type Piece, type Style } from './typesetter.js';
 
 const ROLES: [string, string, string][] = [
   ['prepared', 'planner', 'date'],
@@ -11,9 +13,15 @@ const ROLES: [string, string, string][] = [
 const NOTE_STYLE: Style = { ...LABEL, ink: SOFT };
 const HEIGHT = 62;
 
-/** Three places to sign; a name only where somebody gave one. */
+/** Who prepared, checked and approved: places to sign on a draft; on an approved paper what each signed, and in what capacity. */
 export function drawSignatures(paper: Paper, frame: ProposalFrame): void {
   paper.heading('1', 'Prepared, checked, approved', { keep: HEIGHT + 4 });
+  if (frame.review === undefined) drawPlaces(paper, frame);
+  else drawSigned(paper, frame.review, frame.preparedBy);
+}
+
+/** Three places to sign; a name only where somebody gave one. */
+function drawPlaces(paper: Paper, frame: ProposalFrame): void {
   const gutter = 16;
   const width = (paper.width - 2 * gutter) / 3;
   const top = paper.y;
@@ -36,4 +44,40 @@ export function drawSignatures(paper: Paper, frame: ProposalFrame): void {
     paper.rule({ y: top + drop + 37, from: x, to: x + width, width: STROKE.hair, ink: INK });
   });
   paper.y = top + drop + HEIGHT - 6;
+}
+
+/** Each signature with its own statement, and what was worked out by hand. */
+function drawSigned(paper: Paper, review: PrintedReview, preparedBy: string | null): void {
+  if (preparedBy !== null) paper.paragraph([{ text: 'Prepared by ', ink: SOFT }, preparedBy], { after: 4 });
+  if (review.ownApproval !== null) {
+    paper.paragraph([{ text: review.ownApproval, weight: 'semibold' }], { after: 6 });
+  }
+  for (const { capacity, statement, name, licence, jurisdiction, date } of review.signatures) {
+    paper.need(3 * leading(BODY) + 10);
+    paper.rule({ width: STROKE.load, ink: INK });
+    paper.y += 5;
+    const who = `${name}, ${licence}, ${jurisdiction}, ${formatDate(date)}`;
+    const signed: Piece[] = [
+      { text: `In the capacity of ${capacity}: `, ink: SOFT },
+      { text: who, weight: 'semibold' },
+    ];
+    paper.paragraph(signed, { after: 2 });
+    paper.paragraph([statement], { style: NOTE, after: 7 });
+  }
+  if (review.handChecks.length > 0) {
+    paper.paragraph([{ text: 'Checked by hand: ', ink: SOFT }, `${review.handChecks.join('; ')}.`], { after: 4 });
+  }
+}
+
+/** What the reviewer took on, each finding by itself with the reason; stands behind the findings. */
+export function drawAccepted(paper: Paper, { review }: ProposalFrame): void {
+  for (const { what, reason, by, date } of review?.accepted ?? []) {
+    const accepted: Piece[] = [
+      { text: `Accepted by ${by}, ${formatDate(date)}: `, ink: SOFT },
+      `${what} `,
+      { text: 'Reason: ', ink: SOFT },
+      reason,
+    ];
+    paper.paragraph(accepted, { after: 4 });
+  }
 }

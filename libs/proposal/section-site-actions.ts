@@ -1,6 +1,6 @@
 import type { BankOutcome } from '#libs/engine/index.js';
 import { formatNumber, formatQuantity, GAP } from '#libs/present/format-number.js';
-import { INK, STROKE } from './ink.js';
+import { blankCell } from './blank-cell.js';
 import type { Paper } from './paper.js';
 import { type Cell, drawTable } from './table.js';
 
@@ -19,22 +19,8 @@ export function drawSiteActions(paper: Paper, outcome: BankOutcome): void {
     { head: 'expected', share: 25 },
     { head: 'found', share: 16 },
   ];
-  const rows = actions.map(([action, expected], at): Cell[] => [String(at + 1), action, expected, blank(paper)]);
+  const rows = actions.map(([action, expected], at): Cell[] => [String(at + 1), action, expected, blankCell(paper)]);
   drawTable(paper, columns, rows);
-}
-
-function blank(paper: Paper): Cell {
-  return {
-    pieces: [''],
-    inset: 0,
-    draw: ({ x, y, width, height }) => {
-      paper.doc
-        .lineWidth(STROKE.tick)
-        .moveTo(x, y + height + 1)
-        .lineTo(x + width, y + height + 1)
-        .stroke(INK);
-    },
-  };
 }
 
 function siteActions(outcome: BankOutcome): [string, string][] {
@@ -78,7 +64,7 @@ function siteActions(outcome: BankOutcome): [string, string][] {
       'sign of kvar agrees with the meter',
     ],
     [
-      'Set the controller.',
+      'Set the controller by the sheet of section 16.',
       `${formatNumber(control.setPointPowerFactor, 'given')}; step ${formatQuantity(control.stepDelayS, 's', 'given')}; reconnection ${formatQuantity(control.reconnectDelayS, 's', 'given')}`,
     ],
     ['Test insulation, torque of the connections, and phase rotation.', 'by the maker’s values'],

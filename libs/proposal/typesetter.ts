@@ -118,10 +118,15 @@ export class Typesetter {
   }
 
   private segments(pieces: readonly Piece[], style: Style): Segment[] {
+    return this.runs(pieces, style).map(({ run, own }) => this.segment(run, own));
+  }
+
+  /** Not measured: of what is broken into words only the words are. */
+  private runs(pieces: readonly Piece[], style: Style): { run: Run; own: Style }[] {
     return pieces.flatMap((piece) => {
       const own = typeof piece === 'string' ? style : { ...style, ...piece };
       const text = tidy(typeof piece === 'string' ? piece : piece.text);
-      return splitRuns(text, this.fonts[own.weight], this.covers).map((run) => this.segment(run, own));
+      return splitRuns(text, this.fonts[own.weight], this.covers).map((run) => ({ run, own }));
     });
   }
 
@@ -135,11 +140,11 @@ export class Typesetter {
   private words(pieces: readonly Piece[], style: Style): Line[] {
     const words: Line[] = [];
     let open = false;
-    for (const segment of this.segments(pieces, style)) {
-      segment.text.split(' ').forEach((text, at) => {
+    for (const { run, own } of this.runs(pieces, style)) {
+      run.text.split(' ').forEach((text, at) => {
         if (at > 0) open = false;
         if (text === '') return;
-        const part = this.segment({ text, font: segment.font }, segment.style);
+        const part = this.segment({ text, font: run.font }, own);
         if (!open) words.push({ segments: [], width: 0 });
         append(words.at(-1)!, { segments: [part], width: part.width }, 0);
         open = true;

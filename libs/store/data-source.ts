@@ -6,17 +6,30 @@ import {
   type ReplicationMode,
 } from 'typeorm';
 import { migrations } from '#migrations/migrations.js';
+import { ApiKey } from './api-key.js';
+import { AuditEntry } from './audit-entry.js';
 import { type Dialect, speakDialect } from './columns.js';
+import { IssuedPaper } from './issued-paper.js';
 import { Job } from './job.js';
+import { KeptAnswer } from './kept-answer.js';
 import { KeptMap } from './kept-map.js';
 import { Milestone } from './milestone.js';
+import { Organisation } from './organisation.js';
+import { Person } from './person.js';
+import { PersonSession } from './person-session.js';
 import { ProposalFile } from './proposal-file.js';
 import { RecordColumn } from './record-column.js';
+import { ReviewStanding } from './review-standing.js';
 import { Revision } from './revision.js';
+import { RevisionLink } from './revision-link.js';
 import { StoredRecord } from './stored-record.js';
 import { StoredSite } from './stored-site.js';
 
-const ENTITIES = [StoredSite, StoredRecord, RecordColumn, Revision, ProposalFile, Job, Milestone, KeptMap];
+const ENTITIES = [
+  ...[Organisation, Person, PersonSession, ApiKey, RevisionLink, KeptAnswer],
+  ...[StoredSite, StoredRecord, RecordColumn, Revision, ProposalFile, Job, Milestone, KeptMap],
+  ...[AuditEntry, ReviewStanding, IssuedPaper],
+];
 const BUSY_MS = 5000;
 
 /** Where the data is kept. */

@@ -48,7 +48,11 @@ for (const { name, available, create } of databases) {
         queue: null,
       });
       await before.write(async (manager) => {
-        await insertSite(manager, { id: 's', name: 'Alder Works', document: { name: 'Alder Works' } }, NOW);
+        await insertSite(
+          manager,
+          { id: 's', organisationId: 'first', name: 'Alder Works', document: { name: 'Alder Works' } },
+          NOW,
+        );
         await manager.query(
           `INSERT INTO load_record ("id", "siteId", "hash", "intervalS", "firstS", "endS", "intervalCount", "repaired", "duplicates", "notes", "summary", "quality", "fileHash", "fileBytes", "createdAt")
            VALUES ('c', 's', '${HASH}', 900, 0, 900, 1, 0, 0, '[]', '{}', '{}', '${HASH}', 1, '2026-01-31')`,

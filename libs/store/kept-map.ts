@@ -1,13 +1,18 @@
-import { Column, Entity, Index, PrimaryColumn } from 'typeorm';
+import { Column, Entity, ForeignKey, Index, PrimaryColumn } from 'typeorm';
 import { Col } from './columns.js';
+import { FIRST_ORGANISATION, Organisation } from './organisation.js';
 
 /** Answers about meter files, kept under a name to be chosen again. */
 @Entity('kept_map')
+@Index('kept_map_name', ['organisationId', 'name'], { unique: true })
 export class KeptMap {
   @PrimaryColumn({ type: 'varchar', length: 36 })
   id: string;
 
-  @Index('kept_map_name', { unique: true })
+  @ForeignKey(() => Organisation, { name: 'kept_map_organisation_fk' })
+  @Column({ type: 'varchar', length: 36, default: FIRST_ORGANISATION })
+  organisationId: string;
+
   @Column({ type: 'varchar', length: 80 })
   name: string;
 

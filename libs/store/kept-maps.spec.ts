@@ -6,7 +6,12 @@ import { openStore } from './open-store.js';
 import type { Store } from './store.js';
 
 const NOW = new Date('2026-01-31T10:20:30.456Z');
-const content = (name: string) => ({ name, map: { units: { active: 'W' }, columns: { time: 2 } }, header: null });
+const content = (name: string, organisationId = 'first') => ({
+  organisationId,
+  name,
+  map: { units: { active: 'W' }, columns: { time: 2 } },
+  header: null,
+});
 
 for (const { name: database, available, create } of databases) {
   describe.runIf(available)(`answers kept under a name on ${database}`, () => {

@@ -1,9 +1,10 @@
 import { type EntityManager, Not } from 'typeorm';
 import { InputProblem } from '#libs/engine/index.js';
 import { KeptMap } from './kept-map.js';
+import { StaleVersion } from './stale-version.js';
 
 /** What a client says of kept answers. */
-export type KeptMapContent = Pick<KeptMap, 'name' | 'map' | 'header'>;
+export type KeptMapContent = Pick<KeptMap, 'organisationId' | 'name' | 'map' | 'header'>;
 
 /** Kept answers that are not there. */
 export function noKeptMap(found: string): InputProblem {
@@ -14,7 +15,7 @@ export function noKeptMap(found: string): InputProblem {
  * Keeps answers under a name; call it inside a write.
  * @param manager the write's manager
  * @param id of the new row
- * @param content name, map and the header they were made for
+ * @param content organisation, name, map and the header they were made for
  * @param now moment of creation
  * @throws InputProblem `conflict` where the name is taken
  */
@@ -25,7 +26,7 @@ export async function insertKeptMap(
   now: Date,
 ): Promise<KeptMap> {
   await waitForNames(manager);
-  await refuseTakenName(manager, id, content.name);
+  await refuseTakenName(manager, id, content);
   const row: KeptMap = { id, ...content, version: 1, createdAt: now, updatedAt: now };
   await manager.insert(KeptMap, row);
   return row;
@@ -35,7 +36,7 @@ export async function insertKeptMap(
  * Replaces kept answers if they still have the version the client saw: one compare-and-swap.
  * @param manager the write's manager
  * @param seen id and version the client saw
- * @param content name, map and header
+ * @param content organisation, name, map and header
  * @param now moment of the change
  * @throws InputProblem `not-found`, `conflict` where the name is taken, `stale` where somebody else was first
  */
@@ -46,7 +47,7 @@ export async function replaceKeptMap(
   now: Date,
 ): Promise<void> {
   await waitForNames(manager);
-  await refuseTakenName(manager, seen.id, content.name);
+  await refuseTakenName(manager, seen.id, content);
   const { affected } = await manager.update(
     KeptMap,
     { id: seen.id, version: seen.version },
@@ -70,11 +71,15 @@ export async function deleteKeptMap(manager: EntityManager, id: string, version:
 async function changedMeanwhile(manager: EntityManager, { id, version }: Pick<KeptMap, 'id' | 'version'>) {
   const current = await manager.findOneBy(KeptMap, { id });
   if (current === null) return noKeptMap(id);
-  return new InputProblem([{ code: 'stale', expected: `version ${current.version}`, found: `version ${version}` }]);
+  return new StaleVersion(version, current.version);
 }
 
-async function refuseTakenName(manager: EntityManager, id: string, name: string): Promise<void> {
-  if (!(await manager.existsBy(KeptMap, { name, id: Not(id) }))) return;
+async function refuseTakenName(
+  manager: EntityManager,
+  id: string,
+  { organisationId, name }: KeptMapContent,
+): Promise<void> {
+  if (!(await manager.existsBy(KeptMap, { organisationId, name, id: Not(id) }))) return;
   const expected = 'a name that no kept answers have yet';
   throw new InputProblem([{ code: 'conflict', path: 'name', expected, found: JSON.stringify(name) }]);
 }

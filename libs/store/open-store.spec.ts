@@ -13,7 +13,12 @@ import { Store } from './store.js';
 import { StoredSite } from './stored-site.js';
 
 const NOW = new Date('2026-01-31T10:20:30.456Z');
-const site = (id: string) => ({ id, name: 'Alder Works', document: { name: 'Alder Works', nested: { b: 1, a: [2] } } });
+const site = (id: string) => ({
+  id,
+  organisationId: 'first',
+  name: 'Alder Works',
+  document: { name: 'Alder Works', nested: { b: 1, a: [2] } },
+});
 const dropping: TestDatabase[] = [];
 
 afterEach(async () => {

@@ -17,19 +17,15 @@ const OPTIONAL = ['voltageV', 'connectedKvar'] as const;
  * @param record the record
  */
 export function packRecord(record: LoadRecord): MonthColumn[] {
-  const { names, ofInterval } = monthIndex(record.beginS, UTC_TABLE);
+  const { names, starts } = monthIndex(record.beginS, UTC_TABLE);
   const columns = Object.entries(columnsOf(record));
-  let to = 0;
-  return names.flatMap((month, index) => {
-    const from = to;
-    const next = ofInterval.indexOf(index + 1, from);
-    to = next < 0 ? ofInterval.length : next;
-    return columns.map(([quantity, values]) => ({
+  return names.flatMap((month, m) =>
+    columns.map(([quantity, values]) => ({
       month,
       quantity,
-      ...packColumn(values.subarray(from, to), columnName({ month, quantity })),
-    }));
-  });
+      ...packColumn(values.subarray(starts[m]!, starts[m + 1]!), columnName({ month, quantity })),
+    })),
+  );
 }
 
 /** The name a month's column is packed under. */

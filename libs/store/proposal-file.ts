@@ -1,4 +1,4 @@
-import { Column, Entity, ForeignKey, PrimaryColumn } from 'typeorm';
+import { Column, Entity, ForeignKey, Index, PrimaryColumn } from 'typeorm';
 import { Col } from './columns.js';
 import { Revision } from './revision.js';
 
@@ -12,6 +12,7 @@ export class ProposalFile {
   @Col('bytes')
   bytes: Buffer;
 
+  @Index('proposal_sha256')
   @Column({ type: 'varchar', length: 64 })
   sha256: string;
 }

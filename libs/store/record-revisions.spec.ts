@@ -38,7 +38,9 @@ for (const { name, available, create } of databases) {
 
     const opened = async () => {
       const store = await openStore(database.url);
-      await store.write((manager) => insertSite(manager, { id: 's1', name: 'Site', document: {} }, NOW));
+      await store.write((manager) =>
+        insertSite(manager, { id: 's1', organisationId: 'first', name: 'Site', document: {} }, NOW),
+      );
       await store.write((manager) => insertRecord(manager, facts('r1'), record));
       return store;
     };

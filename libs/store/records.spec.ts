@@ -53,7 +53,9 @@ for (const { name, available, create } of databases) {
     beforeEach(async () => {
       database = await create();
       store = await openStore(database.url);
-      await store.write((manager) => insertSite(manager, { id: 's1', name: 'Site', document: {} }, NOW));
+      await store.write((manager) =>
+        insertSite(manager, { id: 's1', organisationId: 'first', name: 'Site', document: {} }, NOW),
+      );
     });
 
     afterEach(async () => {

@@ -6,12 +6,13 @@ import { StoredSite } from './stored-site.js';
 /** What a list of sites shows of each one's latest revision. */
 export type RevisionMark = Pick<Revision, 'siteId' | 'revision' | 'kind' | 'verdict' | 'createdAt' | 'proposed'>;
 
-/** The latest revision of every site that has one. */
-export async function latestRevisions(manager: EntityManager): Promise<RevisionMark[]> {
+/** The latest revision of every site of an organisation that has one. */
+export async function latestRevisions(manager: EntityManager, organisationId: string): Promise<RevisionMark[]> {
   const rows = await manager
     .createQueryBuilder(Revision, 'revision')
     .innerJoin(StoredSite, 'site', 'site.id = revision.siteId AND site.lastRevision = revision.revision')
     .select(['siteId', 'revision', 'kind', 'verdict', 'createdAt', 'proposed', 'id'].map((name) => `revision.${name}`))
+    .where('site.organisationId = :organisationId', { organisationId })
     .getMany();
   return rows.map(({ siteId, revision, kind, verdict, createdAt, proposed }) => ({
     ...{ siteId, revision, kind, verdict, createdAt, proposed },

@@ -1,5 +1,8 @@
 import type { EntityManager } from 'typeorm';
 import { InputProblem } from '#libs/engine/index.js';
+import { IssuedPaper } from './issued-paper.js';
+import { Revision } from './revision.js';
+import { StaleVersion } from './stale-version.js';
 import { StoredSite } from './stored-site.js';
 
 /** A site that is not there. */
@@ -8,20 +11,21 @@ export function noSite(id: string): InputProblem {
 }
 
 /**
- * Adds a site under the next number of this installation; call it inside a write.
+ * Adds a site under the next number of its organisation; call it inside a write.
  * @param manager the write's manager
- * @param site id, name and document
+ * @param site id, organisation, name and document
  * @param now moment of creation
  */
 export async function insertSite(
   manager: EntityManager,
-  site: Pick<StoredSite, 'id' | 'name' | 'document'>,
+  site: Pick<StoredSite, 'id' | 'organisationId' | 'name' | 'document'>,
   now: Date,
 ): Promise<StoredSite> {
   await waitForNumber(manager);
   const { last } = (await manager
     .createQueryBuilder(StoredSite, 'site')
     .select('MAX(site.number)', 'last')
+    .where('site.organisationId = :organisationId', { organisationId: site.organisationId })
     .getRawOne<{ last: number | null }>()) ?? { last: null };
   const row: StoredSite = {
     ...site,
@@ -67,7 +71,7 @@ export async function replaceSite(
   if (affected === 1) return seen + 1;
   const current = await manager.findOneBy(StoredSite, { id: site.id });
   if (current === null) throw noSite(site.id);
-  throw new InputProblem([{ code: 'stale', expected: `version ${current.version}`, found: `version ${seen}` }]);
+  throw new StaleVersion(seen, current.version);
 }
 
 /**
@@ -75,13 +79,24 @@ export async function replaceSite(
  * @param manager the write's manager
  * @param id the site
  * @param seen version the client saw, null where it does not say
- * @throws InputProblem `not-found` or `stale`
+ * @throws InputProblem `not-found`, `stale`, or `conflict` where a paper of it was issued
  */
 export async function deleteSite(manager: EntityManager, id: string, seen: number | null): Promise<void> {
   const current = await manager.findOneBy(StoredSite, { id });
   if (current === null) throw noSite(id);
-  if (seen !== null && current.version !== seen) {
-    throw new InputProblem([{ code: 'stale', expected: `version ${current.version}`, found: `version ${seen}` }]);
-  }
+  if (seen !== null && current.version !== seen) throw new StaleVersion(seen, current.version);
+  await refuseIssued(manager, id);
   await manager.delete(StoredSite, { id });
+}
+
+/** What was issued stays to be downloaded and verified, and its site with it. */
+async function refuseIssued(manager: EntityManager, siteId: string): Promise<void> {
+  const issued = await manager
+    .createQueryBuilder(IssuedPaper, 'paper')
+    .innerJoin(Revision, 'revision', 'revision.id = paper.revisionId')
+    .where('revision.siteId = :siteId', { siteId })
+    .getCount();
+  if (issued === 0) return;
+  const found = `${issued}, which are kept for ever`;
+  throw new InputProblem([{ code: 'conflict', expected: 'a site without approved papers', found }]);
 }

@@ -1,14 +1,20 @@
-import { Column, Entity, Index, PrimaryColumn } from 'typeorm';
+import { Column, Entity, ForeignKey, Index, PrimaryColumn } from 'typeorm';
 import { Col } from './columns.js';
+import { FIRST_ORGANISATION, Organisation } from './organisation.js';
 
 /** A site with its current document; what a plan was made from stands frozen in the revision. */
 @Entity('site')
+@Index('site_number', ['organisationId', 'number'], { unique: true })
 export class StoredSite {
   @PrimaryColumn({ type: 'varchar', length: 36 })
   id: string;
 
-  /** counts the sites of this installation from 1; printed on their proposals */
-  @Index('site_number', { unique: true })
+  /** whose it is: records, revisions, jobs and papers belong to whom their site belongs to */
+  @ForeignKey(() => Organisation, { name: 'site_organisation_fk' })
+  @Column({ type: 'varchar', length: 36, default: FIRST_ORGANISATION })
+  organisationId: string;
+
+  /** counts the sites of its organisation from 1; printed on their proposals */
   @Column({ type: 'integer' })
   number: number;
 

@@ -99,6 +99,7 @@ const controls: [rule: string, file: string, text: string][] = [
   ['pure', 'libs/engine/record/record.ts', plain('new Intl.NumberFormat()')],
   ['intl-home', 'libs/contract/reader.ts', plain('new Intl.NumberFormat()')],
   ['intl-home', 'libs/store/store.ts', plain('(1).toLocaleString()')],
+  ['intl-home', 'apps/web/page.ts', plain('(1).toLocaleString()')],
   ['file-length', 'libs/contract/reader.ts', 'let a = 0;\n'.repeat(301)],
   ['names', 'libs/contract/utils.ts', ''],
   ['names', 'libs/contract/helpers/day.ts', ''],

@@ -27,7 +27,9 @@ export async function benchStore(): Promise<boolean> {
   const file = join(dir, 'store.db');
   try {
     await opened(file, (store) =>
-      store.write((manager) => insertSite(manager, { id: 's', name: 'Site', document: {} }, new Date(0))),
+      store.write((manager) =>
+        insertSite(manager, { id: 's', organisationId: 'first', name: 'Site', document: {} }, new Date(0)),
+      ),
     );
     const sizeMet = await benchSize(file);
     return (await opened(file, benchTimes)) && sizeMet;

@@ -6,7 +6,7 @@ import { clientOf, type TestServer } from './test-server.js';
 const MAIN = join(import.meta.dirname, '../../dist/apps/server/main.js');
 
 /** The built server as a process of its own, to be ended in any way. */
-export interface ServerProcess extends Omit<TestServer, 'close'> {
+export interface ServerProcess extends Omit<TestServer, 'close' | 'routes'> {
   /** sends a signal and waits for the end; gives the exit code, null where a signal ended it */
   end: (signal: 'SIGKILL' | 'SIGTERM' | 'SIGINT') => Promise<number | null>;
   /** what it wrote to stderr so far */
@@ -43,9 +43,10 @@ export async function startProcess(
   const end: ServerProcess['end'] = async (signal) => {
     const ended = once(child, 'exit');
     child.kill(signal);
-    const [code] = await ended;
+    const [code, by] = (await ended) as [number | null, NodeJS.Signals | null];
+    if (by !== null && by !== signal) throw new Error(`the server was ended by ${by}, not by ${signal}: ${said}`);
     if (printed !== '') throw new Error(`the server wrote to stdout: ${printed}`);
-    return code as number | null;
+    return code;
   };
   return { ...clientOf(base), end, said: () => said };
 }

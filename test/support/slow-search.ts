@@ -95,8 +95,8 @@ const OPEN_REASONS = [
   'supply.weakerThanLoad',
 ];
 
-// The verdict read off the rows again, without inrush where the switches limit it.
-function verdictOf({ result }: Outcome, limitsInrush: boolean): Verdict {
+/** The verdict read off the rows again, without inrush where the switches limit it. */
+export function verdictOf({ result }: Outcome, limitsInrush: boolean): Verdict {
   const rows = result.duties.filter(({ name }) => !(limitsInrush && name.startsWith('inrush')));
   const given = rows.map(({ verdict }) => verdict);
   if (given.includes('avoid')) return 'avoid';

@@ -2,8 +2,10 @@ import { mkdtempSync, rmSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import { pathToFileURL } from 'node:url';
+import { type Route, routesOf } from '#apps/server/declared-routes.js';
 import { createServer, type ServerParts } from '#apps/server/server.js';
 import { readSettings, type Settings } from '#apps/server/settings.js';
+import { CHEAP_HASH } from './made-people.js';
 
 /** Worker threads run compiled code: `npm test` builds it first. */
 const WORKER = pathToFileURL(join(import.meta.dirname, '../../dist/apps/server/planning/planning-worker.js'));
@@ -17,6 +19,8 @@ export interface TestServer {
   ask: (method: string, path: string, body?: unknown, headers?: Record<string, string>) => Promise<Answer>;
   /** A meter file as the body of a request. */
   upload: (siteId: string, content: string | Uint8Array, query?: Record<string, string>) => Promise<Answer>;
+  /** what the router serves, and for whom */
+  routes: Route[];
   close: () => Promise<void>;
 }
 
@@ -40,18 +44,24 @@ export async function startServer(
 ): Promise<TestServer> {
   const dataDir = mkdtempSync(join(tmpdir(), 'varwright-server-'));
   const own = readSettings({ DB_URL: dbUrl, DATA_DIR: dataDir, DEMO: 'off', LOG_LEVEL: 'silent' });
-  const app = await createServer({ ...own, ...settings }, { workerFile: WORKER, pageFolder: PAGE, ...parts });
+  const app = await createServer(
+    { ...own, ...settings },
+    {
+      ...{ workerFile: WORKER, pageFolder: PAGE, hashCost: CHEAP_HASH },
+      ...parts,
+    },
+  );
   await app.listen(0, '127.0.0.1');
   const base = `http://127.0.0.1:${new URL(await app.getUrl()).port}`;
   const close = async () => {
     await app.close();
     rmSync(dataDir, { recursive: true, force: true });
   };
-  return { ...clientOf(base), close };
+  return { ...clientOf(base), routes: routesOf(app), close };
 }
 
 /** The client's half, for a server that runs elsewhere. */
-export function clientOf(base: string): Omit<TestServer, 'close'> {
+export function clientOf(base: string): Omit<TestServer, 'close' | 'routes'> {
   const ask: TestServer['ask'] = async (method, path, body, headers = {}) => {
     if (body === undefined) return answerOf(await fetch(base + path, { method, headers }));
     const typed = { 'content-type': 'application/json', ...headers };

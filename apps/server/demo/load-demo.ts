@@ -2,6 +2,7 @@ import { randomUUID } from 'node:crypto';
 import { Readable } from 'node:stream';
 import { Job } from '#libs/store/job.js';
 import { Milestone } from '#libs/store/milestone.js';
+import { FIRST_ORGANISATION } from '#libs/store/organisation.js';
 import { insertSite } from '#libs/store/sites.js';
 import type { Store } from '#libs/store/store.js';
 import { StoredSite } from '#libs/store/stored-site.js';
@@ -29,7 +30,12 @@ export async function loadDemo(parts: DemoParts): Promise<void> {
   const { store } = parts;
   if (!(await store.read((manager) => manager.existsBy(Milestone, { name: MILESTONE })))) await addDemo(parts);
   const site = await store.read((manager) =>
-    manager.findOneBy(StoredSite, { name: DEMO_SITE.name, lastRevision: 0, version: 1 }),
+    manager.findOneBy(StoredSite, {
+      organisationId: FIRST_ORGANISATION,
+      name: DEMO_SITE.name,
+      lastRevision: 0,
+      version: 1,
+    }),
   );
   if (site === null || (await store.read((manager) => manager.existsBy(Job, { siteId: site.id })))) return;
   await parts.planning.ask('plan', site, { author: 'Varwright', reason: 'example' });
@@ -43,7 +49,11 @@ async function addDemo({ store, spool, importer }: DemoParts): Promise<void> {
     await manager.insert(Milestone, { name: MILESTONE, reachedAt: now });
     if (read === null || (await manager.count(StoredSite)) > 0) return;
     const id = randomUUID();
-    await insertSite(manager, { id, name: DEMO_SITE.name, document: DEMO_SITE }, now);
+    await insertSite(
+      manager,
+      { id, organisationId: FIRST_ORGANISATION, name: DEMO_SITE.name, document: DEMO_SITE },
+      now,
+    );
     await importer.insert(manager, { ...read, order: { ...read.order, siteId: id } });
   });
 }
@@ -52,7 +62,9 @@ async function addDemo({ store, spool, importer }: DemoParts): Promise<void> {
 async function readDemo(spool: Spool, importer: RecordImport) {
   const file = await spool.take(Readable.from(demoLoad(), { objectMode: false }), 'load.csv');
   try {
-    return await importer.read(await importer.order({ id: '', document: DEMO_SITE }, file, {}));
+    return await importer.read(
+      await importer.order({ id: '', organisationId: FIRST_ORGANISATION, document: DEMO_SITE }, file, {}),
+    );
   } finally {
     await spool.discard(file);
   }

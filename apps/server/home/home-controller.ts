@@ -1,6 +1,8 @@
 import { Controller, Get, Param, Res } from '@nestjs/common';
 import type { FastifyReply } from 'fastify';
 import { Store } from '#libs/store/store.js';
+import { type Actor, actorOf, CurrentActor } from '../people/actor.js';
+import { Needs } from '../people/needs.js';
 import { Public } from '../public.js';
 import { findSite } from '../sites/find-site.js';
 import { homePage } from './home-page.js';
@@ -13,16 +15,17 @@ export class HomeController {
   constructor(private readonly store: Store) {}
 
   @Get('plain')
-  @Public('Shows the first site on a page without scripts.')
-  async first(@Res() reply: FastifyReply) {
-    return this.#show(undefined, reply);
+  @Needs('viewer', 'Shows the first site on a page without scripts.')
+  async first(@CurrentActor() actor: Actor, @Res() reply: FastifyReply) {
+    return this.#show(actor, undefined, reply);
   }
 
   @Get('sites/:siteId')
-  @Public('Shows a site on a page without scripts.')
+  @Needs('viewer', 'Shows a site on a page without scripts.')
   async site(@Param('siteId') siteId: string, @Res() reply: FastifyReply) {
-    const { id } = await findSite(this.store, siteId);
-    return this.#show(id, reply);
+    const actor = actorOf(reply.request);
+    const { id } = await findSite(this.store, actor, siteId);
+    return this.#show(actor, id, reply);
   }
 
   @Get('page.css')
@@ -31,8 +34,8 @@ export class HomeController {
     return reply.type('text/css; charset=utf-8').header('cache-control', 'no-cache').send(PAGE_STYLE);
   }
 
-  async #show(siteId: string | undefined, reply: FastifyReply) {
-    const page = homePage(await siteView(this.store, siteId));
+  async #show(actor: Actor, siteId: string | undefined, reply: FastifyReply) {
+    const page = homePage(await siteView(this.store, actor, siteId));
     return reply.type('text/html; charset=utf-8').header('cache-control', 'no-cache').send(page);
   }
 }

@@ -3,6 +3,7 @@ import { formatNumber, formatQuantity } from '#libs/present/format-number.js';
 import { formatMonth } from '#libs/present/local-stamp.js';
 import { NO_PERMISSION, VERDICT_WORDS } from '#libs/present/verdict-words.js';
 import { type Html, html } from './html.js';
+import { framedPage } from './page-frame.js';
 import type { ShownRevision, SiteView } from './site-view.js';
 
 /**
@@ -14,27 +15,11 @@ export function homePage(view: SiteView): string {
   const { site, revision, others } = view;
   const isComputing = view.job?.state === 'queued' || view.job?.state === 'running';
   const title = site === null ? 'Varwright' : `${site.name} – Varwright`;
-  return html`<!doctype html>
-<html lang="en">
-<head>
-<meta charset="utf-8">
-<meta name="viewport" content="width=device-width, initial-scale=1">
-${isComputing && revision === null ? html`<meta http-equiv="refresh" content="2">` : null}
-<title>${title}</title>
-<link rel="icon" href="data:,">
-<link rel="stylesheet" href="/page.css">
-</head>
-<body>
-<header><p><strong>Varwright</strong> <span class="soft">plans capacitor banks for power-factor correction</span></p><div class="line"></div></header>
-<main>
-<h1>${site === null ? 'No site yet' : site.name}</h1>
+  const main = html`<h1>${site === null ? 'No site yet' : site.name}</h1>
 ${revision === null ? stateWords(view) : revisionParts(revision)}
-${others.length === 0 ? null : otherSites(others)}
-</main>
-<footer>${footer()}</footer>
-</body>
-</html>
-`.text;
+${others.length === 0 ? null : otherSites(others)}`;
+  const refresh = isComputing && revision === null ? { refreshS: 2 } : {};
+  return framedPage({ title, main, footer: footer(), ...refresh });
 }
 
 function stateWords({ site, job, records }: SiteView): Html {
@@ -165,6 +150,7 @@ function linkList({ siteId, revision, recordId, kind, number }: ShownRevision): 
     [`Proposal ${number}, revision ${revision} (PDF)`, `${site}/revisions/${revision}/proposal.pdf`],
     [`${kind === 'plan' ? 'Plan' : 'Assessment'} as JSON`, `${site}/revisions/${revision}`],
     ...(recordId === null ? [] : [['Load record as JSON', `${site}/records/${recordId}`] satisfies [string, string]]),
+    [`Review of revision ${revision}`, `/sites/${siteId}/revisions/${revision}/review`],
     ['Site file as JSON', site],
     ['All revisions', `${site}/revisions`],
   ];
@@ -178,7 +164,8 @@ function otherSites(others: SiteView['others']): Html {
 }
 
 function footer(): Html {
-  return html`<section aria-labelledby="more"><h2 id="more">For programs</h2><ul class="links">
+  return html`<section aria-labelledby="more"><h2 id="more">Also here</h2><ul class="links">
+<li><a href="/verify">Verify a paper</a></li>
 <li><a href="/api/openapi.json">The API’s description (OpenAPI)</a></li>
 <li><a href="/api/sites">Sites as JSON</a></li>
 <li><a href="/api/demo/site.json">Example site file</a></li>

@@ -39,8 +39,40 @@ th { text-align: left; font-weight: 400; }
 thead th { color: var(--soft); font-size: 13px; }
 td, thead th + th { text-align: right; }
 th, td { padding: 4px 8px 4px 0; border-bottom: 1px solid var(--hair); }
+form { max-width: 420px; margin: 16px 0; }
+.field { margin: 12px 0; }
+.field label { display: block; font-size: 13px; line-height: 18px; color: var(--soft); }
+.field small { display: block; color: var(--soft); font-size: 13px; }
+input, select { font: inherit; color: inherit; background: none; border: 0; border-bottom: 1px solid var(--soft);
+  width: 100%; min-height: 36px; padding: 4px 0; border-radius: 0; }
+select option { background: var(--sheet); }
+button { font: inherit; font-weight: 600; color: var(--sheet); background: var(--ink); border: 0; min-height: 40px;
+  padding: 6px 20px; cursor: pointer; }
+button.quiet { color: inherit; background: none; border: 1px solid var(--soft); font-weight: 400; min-height: 32px; padding: 2px 12px; }
+input:focus-visible, select:focus-visible, button:focus-visible { outline: 3px solid var(--ink); outline-offset: 3px; }
+.alert { border-left: 5px solid var(--avoid); padding: 4px 12px; max-width: 620px; }
 .links { list-style: none; padding: 0; display: flex; flex-wrap: wrap; gap: 4px 24px; }
 .links a { padding: 9px 0; }
+form[data-act], form[id] { max-width: 640px; }
+form label { display: block; margin: 8px 0; }
+form label span { display: block; font-size: 13px; line-height: 18px; color: var(--soft); }
+textarea { font: inherit; color: inherit; background: none; border: 0; border-bottom: 1px solid var(--soft); width: 100%; min-height: 52px; }
+input[type=checkbox] { width: 24px; height: 24px; min-height: 24px; vertical-align: middle; accent-color: var(--ink); }
+textarea:focus-visible, summary:focus-visible { outline: 3px solid var(--ink); outline-offset: 3px; }
+.fields { display: grid; grid-template-columns: repeat(auto-fit, minmax(90px, 1fr)); gap: 0 16px; align-items: end; }
+fieldset { border: 0; border-top: 1px solid var(--hair); margin: 12px 0; padding: 8px 0; }
+legend { padding: 0 8px 0 0; font-weight: 600; }
+.level { font-size: 13px; font-weight: 600; padding: 1px 6px; border: 2px solid var(--ink); }
+.level.blocks { background: var(--ink); color: var(--sheet); }
+.drop { border: 1.5px dashed var(--ink); padding: 24px; }
+.drop.over { border-style: solid; }
+[role=alert]:empty, [role=status]:empty { display: none; }
+[role=alert] { color: var(--avoid); font-weight: 600; }
+summary { cursor: pointer; min-height: 24px; padding: 4px 0; }
+.wide { max-width: none; }
+ol { padding-left: 32px; }
+li { overflow-wrap: anywhere; }
+.wide td, .wide th { text-align: left; overflow-wrap: anywhere; vertical-align: top; }
 footer { padding-bottom: 32px; }
 @media (max-width: 719px) { header, main, footer { padding-left: 14px; padding-right: 14px; } h1 { font-size: 21px; line-height: 26px; } }
 @media print { .links { display: none; } }

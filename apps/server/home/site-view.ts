@@ -4,6 +4,7 @@ import { Revision } from '#libs/store/revision.js';
 import type { Store } from '#libs/store/store.js';
 import { StoredRecord } from '#libs/store/stored-record.js';
 import { StoredSite } from '#libs/store/stored-site.js';
+import type { Actor } from '../people/actor.js';
 
 /** A revision with its result read. */
 export interface ShownRevision extends Omit<Revision, 'result' | 'inputs'> {
@@ -25,10 +26,13 @@ export interface SiteView {
 /**
  * Gathers what the page shows of a site.
  * @param store the store
+ * @param actor whose organisation's sites it shows
  * @param siteId which site; absent, the first
  */
-export async function siteView(store: Store, siteId?: string): Promise<SiteView> {
-  const sites = await store.read((manager) => manager.find(StoredSite, { order: { number: 'ASC' } }));
+export async function siteView(store: Store, { organisationId }: Actor, siteId?: string): Promise<SiteView> {
+  const sites = await store.read((manager) =>
+    manager.find(StoredSite, { where: { organisationId }, order: { number: 'ASC' } }),
+  );
   const site = (siteId === undefined ? sites[0] : sites.find(({ id }) => id === siteId)) ?? null;
   const others = sites.filter((other) => other !== site).map(({ id, name }) => ({ id, name }));
   if (site === null) return { site, revision: null, job: null, records: 0, others };

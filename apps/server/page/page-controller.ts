@@ -1,5 +1,6 @@
 import { Controller, Get, NotFoundException, Param, Req, Res } from '@nestjs/common';
 import type { FastifyReply, FastifyRequest } from 'fastify';
+import { Needs } from '../people/needs.js';
 import { Public } from '../public.js';
 import { type PageFile, PageFiles } from './page-files.js';
 
@@ -9,7 +10,7 @@ export class PageController {
   constructor(private readonly files: PageFiles) {}
 
   @Get()
-  @Public('Shows the planner’s page, or leads to the plain one where the page was not built.')
+  @Needs('viewer', 'Shows the planner’s page, or leads to the plain one where the page was not built.')
   first(@Req() request: FastifyRequest, @Res() reply: FastifyReply) {
     const file = this.files.find('index.html');
     if (file === null) return reply.redirect('/plain');

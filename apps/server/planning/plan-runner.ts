@@ -4,13 +4,16 @@ import type { Hands, Runner } from '#libs/jobs/in-process-jobs.js';
 import type { WorkerPool } from '#libs/jobs/pool/worker-pool.js';
 import type { Job } from '#libs/store/job.js';
 import { finishJob } from '#libs/store/jobs.js';
+import { frozenMark } from '#libs/store/plan-hash.js';
 import { readRecord } from '#libs/store/records.js';
+import { type AskedAct, carryOut } from '#libs/store/reviews.js';
 import type { Revision } from '#libs/store/revision.js';
 import { insertRevision } from '#libs/store/revisions.js';
 import { noSite } from '#libs/store/sites.js';
 import type { Store } from '#libs/store/store.js';
 import { StoredSite } from '#libs/store/stored-site.js';
 import type { PlanTask, PlanValue } from './compute-plan.js';
+import { frameOf, sheetOf } from './frame-of.js';
 import type { FrozenPlan } from './plan-request.js';
 import { contentOf } from './planning.js';
 
@@ -46,20 +49,27 @@ async function attempt({ store, pool, job, frozen, record }: Work, hands: Hands)
   if (site === null) throw noSite(job.siteId);
   const content = contentOf(frozen);
   const revision = numberedRevision(site, frozen, content);
-  const task: PlanTask = { ...frozen, record, frame: frameOf(revision) };
+  const task: PlanTask = { ...frozen, record, frame: { ...(await frameOf(store, revision)), ...sheetOf(frozen) } };
   const { result, proposal, ...rest } = await pool.run<PlanValue>('computePlan', task, hands);
   const sha256 = createHash('sha256').update(proposal).digest('hex');
-  const complete = { ...revision, ...rest, result: JSON.stringify(result), verdict: result.verdict };
+  const complete: Revision = { ...revision, ...rest, result: JSON.stringify(result), verdict: result.verdict };
   return store.write(async (manager) => {
     const standing = await insertRevision(manager, {
       revision: complete,
       proposal: { bytes: Buffer.from(proposal), sha256 },
     });
     if (standing === null) return false;
+    if (standing === complete) await carryOut(manager, complete, preparation(complete, frozen, proposal));
     const end = { state: 'done', error: null, revision: standing.revision, finishedAt: new Date() } as const;
     if (!(await finishJob(manager, job, end))) throw new Error('the job was taken from this worker');
     return true;
   });
+}
+
+/** The first line of a revision's log: who made it, and the marks plan and paper are known again by. */
+function preparation(revision: Revision, { preparedBy, author }: FrozenPlan, proposal: Uint8Array): AskedAct {
+  const by = preparedBy ?? { id: 'unnamed', name: author ?? 'unnamed', role: 'planner' };
+  return { by, act: { act: 'prepare', ...frozenMark(revision, proposal) }, now: revision.createdAt, seen: null };
 }
 
 type Numbered = Omit<Revision, 'result' | 'proposed' | 'rival' | 'verdict'>;
@@ -80,8 +90,4 @@ function numberedRevision(site: StoredSite, frozen: FrozenPlan, content: { text:
     author: frozen.author,
     reason: frozen.reason,
   };
-}
-
-function frameOf({ number, revision, author, contentHash, engineVersion }: Numbered): PlanTask['frame'] {
-  return { number, revision, state: 'draft, not reviewed', preparedBy: author, contentHash, engineVersion };
 }

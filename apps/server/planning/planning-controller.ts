@@ -1,19 +1,20 @@
 import { Body, Controller, Get, Inject, Param, Post, Query, Res } from '@nestjs/common';
 import type { FastifyReply } from 'fastify';
 import { type PlanRequest, planRequestSchema } from '#libs/contract/plan-request-schema.js';
-import { InputProblem } from '#libs/engine/index.js';
 import type { Jobs } from '#libs/jobs/jobs.js';
 import { ProposalFile } from '#libs/store/proposal-file.js';
 import { Revision } from '#libs/store/revision.js';
 import { Store } from '#libs/store/store.js';
 import { ContractPipe } from '../contract-pipe.js';
 import { showJob } from '../jobs/show-job.js';
-import { pathNumber } from '../path-number.js';
-import { Public } from '../public.js';
+import { type Actor, actorOf, CurrentActor, LOCAL_ACTOR } from '../people/actor.js';
+import { Needs } from '../people/needs.js';
 import { findSite } from '../sites/find-site.js';
 import { JOBS } from '../tokens.js';
+import { findRevision } from './find-revision.js';
 import type { FrozenPlan } from './plan-request.js';
 import { Planning } from './planning.js';
+import { personOf } from '../review/person-of.js';
 import { refuseEnded } from './refuse-ended.js';
 import { revisionHead, revisionJson } from './show-revision.js';
 import { waitS } from './wait-time.js';
@@ -28,7 +29,10 @@ export class PlanningController {
   ) {}
 
   @Post('plans')
-  @Public('Designs a bank for the site as it stands: 202 with the job, or 201 with the revision within ?wait=seconds.')
+  @Needs(
+    'planner',
+    'Designs a bank for the site as it stands: 202 with the job, or 201 with the revision within ?wait=seconds.',
+  )
   async plan(
     @Param('siteId') siteId: string,
     @Query() query: Record<string, unknown>,
@@ -39,7 +43,7 @@ export class PlanningController {
   }
 
   @Post('assessments')
-  @Public('Judges the site’s own bank: 202 with the job, or 201 with the revision within ?wait=seconds.')
+  @Needs('planner', 'Judges the site’s own bank: 202 with the job, or 201 with the revision within ?wait=seconds.')
   async assess(
     @Param('siteId') siteId: string,
     @Query() query: Record<string, unknown>,
@@ -50,9 +54,9 @@ export class PlanningController {
   }
 
   @Get('revisions')
-  @Public('Lists the revisions of a site, the latest first.')
-  async list(@Param('siteId') siteId: string) {
-    const { id } = await findSite(this.store, siteId);
+  @Needs('viewer', 'Lists the revisions of a site, the latest first.')
+  async list(@CurrentActor() actor: Actor, @Param('siteId') siteId: string) {
+    const { id } = await findSite(this.store, actor, siteId);
     const revisions = await this.store.read((manager) =>
       manager.find(Revision, { where: { siteId: id }, order: { revision: 'DESC' } }),
     );
@@ -60,15 +64,19 @@ export class PlanningController {
   }
 
   @Get('revisions/:revision')
-  @Public('Gives a revision: frozen inputs, hashes, engine version and the result.')
+  @Needs('viewer', 'Gives a revision: frozen inputs, hashes, engine version and the result.')
   async get(@Param('siteId') siteId: string, @Param('revision') revision: string, @Res() reply: FastifyReply) {
-    return this.#send(await this.#find(siteId, revision), reply);
+    return this.#send(await findRevision(this.store, actorOf(reply.request), { siteId, revision }), reply);
   }
 
   @Get('revisions/:revision/proposal.pdf')
-  @Public('Gives the proposal of a revision, the same bytes at every download.')
+  @Needs('viewer', 'Gives the proposal of a revision, the same bytes at every download.')
   async proposal(@Param('siteId') siteId: string, @Param('revision') revision: string, @Res() reply: FastifyReply) {
-    const { id, number, revision: count } = await this.#find(siteId, revision);
+    const {
+      id,
+      number,
+      revision: count,
+    } = await findRevision(this.store, actorOf(reply.request), { siteId, revision });
     const file = await this.store.read((manager) => manager.findOneByOrFail(ProposalFile, { revisionId: id }));
     return reply
       .type('application/pdf')
@@ -83,24 +91,24 @@ export class PlanningController {
     { body, waitS }: { body: PlanRequest; waitS: number },
     reply: FastifyReply,
   ) {
-    const site = await findSite(this.store, siteId);
-    const asked = await this.planning.ask(kind, site, body);
+    const actor = actorOf(reply.request);
+    const site = await findSite(this.store, actor, siteId);
+    // With an account a plan carries its name, whatever is typed.
+    const author = actor === LOCAL_ACTOR ? body.author : actor.name;
+    const asked = await this.planning.ask(
+      kind,
+      site,
+      { ...body, ...(author === undefined ? {} : { author }) },
+      personOf(actor),
+    );
     if ('contentHash' in asked) return this.#send(asked, reply.status(200));
     const job = waitS === 0 ? asked : await this.jobs.result(asked.id, waitS);
     if (job.state === 'done') {
       reply.status(201).header('location', showJob(job).links.revision ?? '');
-      return this.#send(await this.#find(siteId, `${job.revision}`), reply);
+      return this.#send(await findRevision(this.store, actor, { siteId, revision: `${job.revision}` }), reply);
     }
     refuseEnded(job);
     return reply.status(202).header('location', showJob(job).links.self).send(showJob(job));
-  }
-
-  async #find(siteId: string, revision: string): Promise<Revision> {
-    const { id } = await findSite(this.store, siteId);
-    const number = pathNumber(revision, 'revision');
-    const found = await this.store.read((manager) => manager.findOneBy(Revision, { siteId: id, revision: number }));
-    if (found !== null) return found;
-    throw new InputProblem([{ code: 'not-found', expected: 'a revision of this site', found: `${number}` }]);
   }
 
   #send(revision: Revision, reply: FastifyReply) {

@@ -8,6 +8,8 @@ import { readSiteWithMathjs } from '#libs/contract/read-site-with-mathjs.js';
 import { zoneTableOf } from '#libs/contract/time-zone.js';
 import { ENGINE_VERSION, InputProblem } from '#libs/engine/index.js';
 import type { Jobs } from '#libs/jobs/jobs.js';
+import type { Person } from '#libs/review/review-act.js';
+import { readLogo } from '#libs/proposal/read-logo.js';
 import type { Job } from '#libs/store/job.js';
 import { Revision } from '#libs/store/revision.js';
 import { Store } from '#libs/store/store.js';
@@ -27,16 +29,18 @@ export class Planning {
 
   /**
    * Asks for a plan or an assessment of the site as it stands now, by its latest record, or its estimate without one.
+   * @param by who asks; absent where it is the program itself
    * @returns the revision where equal inputs have led to one already, else the job that will make it
    * @throws InputProblem where the site, the record or the bank to judge is missing
    */
-  async ask(kind: FrozenPlan['kind'], stored: StoredSite, request: PlanRequest): Promise<Revision | Job> {
+  async ask(kind: FrozenPlan['kind'], stored: StoredSite, request: PlanRequest, by?: Person): Promise<Revision | Job> {
     const site = frozenSite(await readSiteWithMathjs(stored.document), Date.now() / 1000);
     if (kind === 'assess' && site.bank === undefined) {
       throw new InputProblem([{ code: 'missing', path: 'bank', expected: 'the bank to judge', found: 'nothing' }]);
     }
     const record = await this.#recordOf(stored.id, request.recordId);
     if (record === null && site.estimate === undefined) throw nothingToPlanWith();
+    if (request.logo !== undefined) readLogo(Buffer.from(request.logo, 'base64'));
     const zone = record === null ? estimateZone(site) : zoneTableOf(site.timeZone, record);
     const frozen: FrozenPlan = {
       kind,
@@ -46,23 +50,29 @@ export class Planning {
       recordHash: record?.hash ?? null,
       author: request.author ?? null,
       reason: request.reason ?? null,
+      ...(by === undefined ? {} : { preparedBy: by }),
+      ...(request.paper === undefined ? {} : { paper: request.paper }),
+      ...(request.logo === undefined ? {} : { logo: request.logo }),
     };
+    return this.make(stored.id, frozen);
+  }
+
+  /**
+   * Asks for the revision that frozen inputs lead to.
+   * @param siteId whose revision it becomes
+   * @param frozen inputs, and who wants them computed
+   * @returns the revision where equal inputs have led to one already, else the job that will make it
+   */
+  async make(siteId: string, frozen: FrozenPlan): Promise<Revision | Job> {
     const { hash } = contentOf(frozen);
-    const standing = await this.store.read((manager) =>
-      manager.findOneBy(Revision, { siteId: stored.id, contentHash: hash }),
-    );
+    const standing = await this.store.read((manager) => manager.findOneBy(Revision, { siteId, contentHash: hash }));
     if (standing !== null) return standing;
-    return this.jobs.submit({
-      siteId: stored.id,
-      kind,
-      inputHash: hash,
-      engineVersion: ENGINE_VERSION,
-      request: frozen,
-    });
+    const { kind } = frozen;
+    return this.jobs.submit({ siteId, kind, inputHash: hash, engineVersion: ENGINE_VERSION, request: frozen });
   }
 
   async #recordOf(siteId: string, recordId: string | undefined): Promise<StoredRecord | null> {
-    if (recordId !== undefined) return findRecord(this.store, siteId, recordId);
+    if (recordId !== undefined) return findRecord(this.store, { id: siteId }, recordId);
     const [latest] = await this.store.read((manager) =>
       manager.find(StoredRecord, { where: { siteId }, order: { createdAt: 'DESC', id: 'ASC' }, take: 1 }),
     );

@@ -12,9 +12,12 @@ export function revisionHead(revision: Revision) {
   };
 }
 
-/** A revision in full: its frozen inputs and its result, letter for letter as they were stored. */
-export function revisionJson(revision: Revision): string {
-  const head = JSON.stringify(revisionHead(revision));
+/**
+ * A revision in full: its frozen inputs and its result, letter for letter as they were stored.
+ * @param revision which
+ * @param head what stands before them
+ */
+export function revisionJson(revision: Revision, head: object = revisionHead(revision)): string {
   const rival = JSON.stringify(revision.rival);
-  return `${head.slice(0, -1)},"rival":${rival},"inputs":${revision.inputs},"result":${revision.result}}`;
+  return `${JSON.stringify(head).slice(0, -1)},"rival":${rival},"inputs":${revision.inputs},"result":${revision.result}}`;
 }

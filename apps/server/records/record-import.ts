@@ -53,7 +53,7 @@ export class RecordImport {
    * @throws InputProblem `not-found` where there are none of that name
    */
   async order(
-    site: Pick<StoredSite, 'id' | 'document'>,
+    site: Pick<StoredSite, 'id' | 'organisationId' | 'document'>,
     file: SpooledFile,
     options: UploadOptions,
     previousId: string | null = null,
@@ -69,7 +69,8 @@ export class RecordImport {
       ...(map === undefined ? {} : { map }),
     };
     if (keptMap === undefined) return order;
-    const kept = await this.store.read((manager) => manager.findOneBy(KeptMap, { name: keptMap }));
+    const named = { organisationId: site.organisationId, name: keptMap };
+    const kept = await this.store.read((manager) => manager.findOneBy(KeptMap, named));
     if (kept === null) throw noKeptMap(JSON.stringify(keptMap.slice(0, 80)));
     const { name, version } = kept;
     return { ...order, map: mergedMap(kept.map, map ?? {}), kept: { name, version } };
@@ -82,13 +83,13 @@ export class RecordImport {
    * @throws InputProblem where the file cannot be read, Question where it can be read in several ways
    */
   async read(order: ImportOrder, hands: TaskOptions = {}): Promise<ReadRecord> {
-    const { file, siteId: _, previousId, ...said } = order;
+    const { file, siteId, previousId, ...said } = order;
     const previous = previousId === null ? null : await this.#previous(previousId);
     const task: ReadTask = { ...said, path: file.path, sizeBytes: file.bytes };
     if (previous !== null) task.earlier = previous.reading;
     const read = await this.pool.run<ReadValue>('readFile', task, hands);
     if (!('questions' in read)) return { order, previous: previous?.stored ?? null, read };
-    const offered = order.kept === undefined ? await this.offeredFor(read.header) : [];
+    const offered = order.kept === undefined ? await this.offeredFor(siteId, read.header) : [];
     throw offered.length === 0 ? new Question(read.questions) : new QuestionWithOffer(read.questions, offered);
   }
 
@@ -121,11 +122,24 @@ export class RecordImport {
     return manager.findOneByOrFail(StoredRecord, { id });
   }
 
-  /** Kept answers that were made for a file with the same header; they are offered, never taken unasked. */
-  async offeredFor(header: string | null): Promise<Pick<KeptMap, 'id' | 'name'>[]> {
+  /** Stores what was read, in a write of its own. */
+  keep(read: ReadRecord): Promise<StoredRecord> {
+    return this.store.write((manager) => this.insert(manager, read));
+  }
+
+  /** A record that was stored. */
+  stored(id: string): Promise<StoredRecord> {
+    return this.store.read((manager) => manager.findOneByOrFail(StoredRecord, { id }));
+  }
+
+  /** Kept answers of the site’s organisation that were made for a file with the same header; never taken unasked. */
+  async offeredFor(siteId: string, header: string | null): Promise<Pick<KeptMap, 'id' | 'name'>[]> {
     if (header === null) return [];
+    const site = await this.store.read((manager) => manager.findOneBy(StoredSite, { id: siteId }));
+    if (site === null) return [];
+    const { organisationId } = site;
     const kept = await this.store.read((manager) =>
-      manager.find(KeptMap, { where: { header }, order: { name: 'ASC' } }),
+      manager.find(KeptMap, { where: { organisationId, header }, order: { name: 'ASC' } }),
     );
     return kept.map(({ id, name }) => ({ id, name }));
   }

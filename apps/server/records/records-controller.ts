@@ -7,7 +7,8 @@ import { readRecord } from '#libs/store/records.js';
 import { Revision } from '#libs/store/revision.js';
 import { Store } from '#libs/store/store.js';
 import { StoredRecord } from '#libs/store/stored-record.js';
-import { Public } from '../public.js';
+import { type Actor, actorOf, CurrentActor } from '../people/actor.js';
+import { Needs } from '../people/needs.js';
 import { findSite } from '../sites/find-site.js';
 import { findRecord } from './find-record.js';
 import { showRecord } from './show-record.js';
@@ -22,9 +23,9 @@ export class RecordsController {
   ) {}
 
   @Get()
-  @Public('Lists the load records of a site, the latest first.')
-  async list(@Param('siteId') siteId: string) {
-    const { id, document } = await findSite(this.store, siteId);
+  @Needs('viewer', 'Lists the load records of a site, the latest first.')
+  async list(@CurrentActor() actor: Actor, @Param('siteId') siteId: string) {
+    const { id, document } = await findSite(this.store, actor, siteId);
     const records = await this.store.read((manager) =>
       manager.find(StoredRecord, { where: { siteId: id }, order: { createdAt: 'DESC', id: 'ASC' } }),
     );
@@ -33,49 +34,55 @@ export class RecordsController {
   }
 
   @Post()
-  @Public('Reads a meter file: the body itself, or the field "file" of a form beside "format", "timeZone" and "map".')
+  @Needs(
+    'planner',
+    'Reads a meter file: the body itself, or the field "file" of a form beside "format", "timeZone" and "map".',
+  )
   async upload(
     @Param('siteId') siteId: string,
     @Req() request: FastifyRequest,
     @Res({ passthrough: true }) reply: FastifyReply,
   ) {
-    return this.intake.take(await findSite(this.store, siteId), null, request, reply);
+    return this.intake.take(await findSite(this.store, actorOf(request), siteId), null, request, reply);
   }
 
   @Get(':recordId')
-  @Public('Gives a load record: what was read, from which file, in what quality.')
-  async get(@Param('siteId') siteId: string, @Param('recordId') recordId: string) {
-    const { id, document } = await findSite(this.store, siteId);
-    const record = await findRecord(this.store, id, recordId);
-    return showRecord(record, await readSiteWithMathjs(document));
+  @Needs('viewer', 'Gives a load record: what was read, from which file, in what quality.')
+  async get(@CurrentActor() actor: Actor, @Param('siteId') siteId: string, @Param('recordId') recordId: string) {
+    const site = await findSite(this.store, actor, siteId);
+    const record = await findRecord(this.store, site, recordId);
+    return showRecord(record, await readSiteWithMathjs(site.document));
   }
 
   @Get(':recordId/revisions')
-  @Public('Lists the revisions of a load record up to the latest, which comes first.')
-  async revisions(@Param('siteId') siteId: string, @Param('recordId') recordId: string) {
-    const { id, document } = await findSite(this.store, siteId);
-    const record = await findRecord(this.store, id, recordId);
-    const all = await this.store.read((manager) => manager.findBy(StoredRecord, { siteId: id }));
-    const site = await readSiteWithMathjs(document);
-    return { records: lineOf(record, all).map((revision) => showRecord(revision, site)) };
+  @Needs('viewer', 'Lists the revisions of a load record up to the latest, which comes first.')
+  async revisions(@CurrentActor() actor: Actor, @Param('siteId') siteId: string, @Param('recordId') recordId: string) {
+    const site = await findSite(this.store, actor, siteId);
+    const record = await findRecord(this.store, site, recordId);
+    const all = await this.store.read((manager) => manager.findBy(StoredRecord, { siteId: site.id }));
+    const read = await readSiteWithMathjs(site.document);
+    return { records: lineOf(record, all).map((revision) => showRecord(revision, read)) };
   }
 
   @Post(':recordId/revisions')
-  @Public('Extends or corrects a load record by a further meter file: the next revision, or 200 where it adds nothing.')
+  @Needs(
+    'planner',
+    'Extends or corrects a load record by a further meter file: the next revision, or 200 where it adds nothing.',
+  )
   async extend(
     @Param('siteId') siteId: string,
     @Param('recordId') recordId: string,
     @Req() request: FastifyRequest,
     @Res({ passthrough: true }) reply: FastifyReply,
   ) {
-    const previous = await findRecord(this.store, siteId, recordId);
-    return this.intake.take(await findSite(this.store, siteId), previous, request, reply);
+    const site = await findSite(this.store, actorOf(request), siteId);
+    return this.intake.take(site, await findRecord(this.store, site, recordId), request, reply);
   }
 
   @Get(':recordId/columns')
-  @Public('Gives the valid intervals of a load record as columns.')
-  async columns(@Param('siteId') siteId: string, @Param('recordId') recordId: string) {
-    const { id } = await findRecord(this.store, siteId, recordId);
+  @Needs('viewer', 'Gives the valid intervals of a load record as columns.')
+  async columns(@CurrentActor() actor: Actor, @Param('siteId') siteId: string, @Param('recordId') recordId: string) {
+    const { id } = await findRecord(this.store, await findSite(this.store, actor, siteId), recordId);
     const record = await this.store.read((manager) => readRecord(manager, id));
     if (record === null) throw new Error(`record ${id} vanished`);
     return recordColumns(record);
@@ -83,9 +90,9 @@ export class RecordsController {
 
   @Delete(':recordId')
   @HttpCode(204)
-  @Public('Removes a load record that no plan and no later revision was made from.')
-  async remove(@Param('siteId') siteId: string, @Param('recordId') recordId: string) {
-    const { id } = await findRecord(this.store, siteId, recordId);
+  @Needs('planner', 'Removes a load record that no plan and no later revision was made from.')
+  async remove(@CurrentActor() actor: Actor, @Param('siteId') siteId: string, @Param('recordId') recordId: string) {
+    const { id } = await findRecord(this.store, await findSite(this.store, actor, siteId), recordId);
     await this.store.write(async (manager) => {
       const uses = await manager.countBy(Revision, { recordId: id });
       if (uses > 0) {

@@ -3,10 +3,10 @@ import type { FastifyReply, FastifyRequest } from 'fastify';
 import { readSiteWithMathjs } from '#libs/contract/read-site-with-mathjs.js';
 import type { Jobs } from '#libs/jobs/jobs.js';
 import type { Job } from '#libs/store/job.js';
-import { Store } from '#libs/store/store.js';
-import { StoredRecord } from '#libs/store/stored-record.js';
+import type { StoredRecord } from '#libs/store/stored-record.js';
 import type { StoredSite } from '#libs/store/stored-site.js';
 import { showJob } from '../jobs/show-job.js';
+import { Once, replayed } from '../once/once.js';
 import { refuseEnded } from '../planning/refuse-ended.js';
 import { JOBS } from '../tokens.js';
 import { type FrozenImport, importRequest } from './import-jobs.js';
@@ -25,10 +25,10 @@ interface Beside {
 @Injectable()
 export class UploadIntake {
   constructor(
-    private readonly store: Store,
     private readonly spool: Spool,
     private readonly importer: RecordImport,
     @Inject(JOBS) private readonly jobs: Jobs,
+    private readonly once: Once,
   ) {}
 
   /**
@@ -45,6 +45,8 @@ export class UploadIntake {
       const upload = await this.spool.receive(request);
       file = upload.file;
       const options = { ...fromQuery, ...readUploadOptions(upload.fields) };
+      const answered = await this.once.begin(request, { file: file.sha256, fields: upload.fields });
+      if (answered !== null) return JSON.parse(replayed(reply, answered)) as object;
       const order = await this.importer.order(site, file, options, previous?.id ?? null);
       if (options.waitS === undefined) return await this.#show(await this.#readNow(order), { site, previous }, reply);
       const asked = await this.jobs.submit(importRequest(this.spool, order));
@@ -57,18 +59,12 @@ export class UploadIntake {
   }
 
   async #readNow(order: ImportOrder): Promise<StoredRecord> {
-    const read = await this.importer.read(order);
-    return this.store.write((manager) => this.importer.insert(manager, read));
+    return this.importer.keep(await this.importer.read(order));
   }
 
   async #follow(job: Job, beside: Beside, reply: FastifyReply) {
     if (job.state === 'done') {
-      const { recordId: id } = job;
-      return this.#show(
-        await this.store.read((manager) => manager.findOneByOrFail(StoredRecord, { id: id! })),
-        beside,
-        reply,
-      );
+      return this.#show(await this.importer.stored(job.recordId!), beside, reply);
     }
     refuseEnded(job);
     reply.status(202).header('location', showJob(job).links.self);
@@ -80,6 +76,6 @@ export class UploadIntake {
     reply.status(record.id === previous?.id ? 200 : 201);
     reply.header('location', `/api/sites/${record.siteId}/records/${record.id}`);
     const shown = showRecord(record, await readSiteWithMathjs(site.document));
-    return { ...shown, offered: await this.importer.offeredFor(record.fileHeader) };
+    return { ...shown, offered: await this.importer.offeredFor(site.id, record.fileHeader) };
   }
 }

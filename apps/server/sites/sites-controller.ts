@@ -7,7 +7,8 @@ import { latestRevisions } from '#libs/store/revisions.js';
 import { deleteSite, insertSite, replaceSite } from '#libs/store/sites.js';
 import { Store } from '#libs/store/store.js';
 import { StoredSite } from '#libs/store/stored-site.js';
-import { Public } from '../public.js';
+import { type Actor, actorOf, CurrentActor } from '../people/actor.js';
+import { Needs } from '../people/needs.js';
 import { findSite } from './find-site.js';
 import { tagOf, versionSeen } from './version-tag.js';
 
@@ -17,33 +18,43 @@ export class SitesController {
   constructor(private readonly store: Store) {}
 
   @Get()
-  @Public('Lists the sites, each with its latest revision.')
-  async list() {
-    const sites = await this.store.read((manager) => manager.find(StoredSite, { order: { number: 'ASC' } }));
-    const revisions = await this.store.read(latestRevisions);
+  @Needs('viewer', 'Lists the sites, each with its latest revision.')
+  async list(@CurrentActor() { organisationId }: Actor) {
+    const sites = await this.store.read((manager) =>
+      manager.find(StoredSite, { where: { organisationId }, order: { number: 'ASC' } }),
+    );
+    const revisions = await this.store.read((manager) => latestRevisions(manager, organisationId));
     const latest = new Map(revisions.map(({ siteId, ...revision }) => [siteId, revision]));
     return { sites: sites.map((site) => ({ ...headOf(site), latest: latest.get(site.id) ?? null })) };
   }
 
   @Post()
-  @Public('Adds a site. The body is the site file.')
-  async create(@Body({ schema: siteSchema }) document: object, @Res({ passthrough: true }) reply: FastifyReply) {
+  @Needs('planner', 'Adds a site. The body is the site file.')
+  async create(
+    @CurrentActor() { organisationId }: Actor,
+    @Body({ schema: siteSchema }) document: object,
+    @Res({ passthrough: true }) reply: FastifyReply,
+  ) {
     const { name } = await readSiteWithMathjs(document);
     const site = await this.store.write((manager) =>
-      insertSite(manager, { id: randomUUID(), name, document }, new Date()),
+      insertSite(manager, { id: randomUUID(), organisationId, name, document }, new Date()),
     );
     reply.header('location', `/api/sites/${site.id}`);
     return answerWith(site, reply);
   }
 
   @Get(':siteId')
-  @Public('Gives a site with its file; the ETag is its version.')
-  async get(@Param('siteId') siteId: string, @Res({ passthrough: true }) reply: FastifyReply) {
-    return answerWith(await findSite(this.store, siteId), reply);
+  @Needs('viewer', 'Gives a site with its file; the ETag is its version.')
+  async get(
+    @CurrentActor() actor: Actor,
+    @Param('siteId') siteId: string,
+    @Res({ passthrough: true }) reply: FastifyReply,
+  ) {
+    return answerWith(await findSite(this.store, actor, siteId), reply);
   }
 
   @Put(':siteId')
-  @Public('Replaces a site’s file, if it still has the version named in If-Match.')
+  @Needs('planner', 'Replaces a site’s file, if it still has the version named in If-Match.')
   async replace(
     @Param('siteId') siteId: string,
     @Headers('if-match') seen: string | undefined,
@@ -51,23 +62,28 @@ export class SitesController {
     @Res({ passthrough: true }) reply: FastifyReply,
   ) {
     const version = versionSeen(seen, true) ?? 0;
-    const { id } = await findSite(this.store, siteId);
+    const actor = actorOf(reply.request);
+    const { id } = await findSite(this.store, actor, siteId);
     const { name } = await readSiteWithMathjs(document);
     await this.store.write((manager) => replaceSite(manager, { id, name, document }, version, new Date()));
-    return answerWith(await findSite(this.store, id), reply);
+    return answerWith(await findSite(this.store, actor, id), reply);
   }
 
   @Delete(':siteId')
   @HttpCode(204)
-  @Public('Removes a site with its records, revisions and proposals; If-Match is heeded where given.')
-  async remove(@Param('siteId') siteId: string, @Headers('if-match') seen: string | undefined) {
+  @Needs('planner', 'Removes a site with its records, revisions and proposals; If-Match is heeded where given.')
+  async remove(
+    @CurrentActor() actor: Actor,
+    @Param('siteId') siteId: string,
+    @Headers('if-match') seen: string | undefined,
+  ) {
     const version = versionSeen(seen, false);
-    const { id } = await findSite(this.store, siteId);
+    const { id } = await findSite(this.store, actor, siteId);
     await this.store.write((manager) => deleteSite(manager, id, version));
   }
 }
 
-function headOf({ document: _, lastRevision: __, ...head }: StoredSite) {
+function headOf({ document: _, lastRevision: __, organisationId: ___, ...head }: StoredSite) {
   return head;
 }
 

@@ -4,6 +4,7 @@ import { formatMonth } from '#libs/present/local-stamp.js';
 import { bankOf } from '../desk/desk-state.js';
 import { useDesk } from '../desk/use-desk.js';
 import { Bars } from '../draw/bars.js';
+import { BeingDrawn } from '../draw/being-drawn.js';
 import { Plot } from '../draw/plot.js';
 import { latestResult } from '../line/latest-result.js';
 import { NoRecord } from '../record/no-record.js';
@@ -44,6 +45,7 @@ export function BankSheet() {
                 ? `switchings; kept: ${formatNumber(kept.result.operation.totalSwitchings, 'whole')}`
                 : 'switchings',
             digits: 'whole',
+            id: 'operation.totalSwitchings',
           },
           {
             value: operation.shareInTargetPct,
@@ -52,6 +54,7 @@ export function BankSheet() {
               isTrial && kept.result.operation !== null
                 ? `in target; kept: ${formatQuantity(kept.result.operation.shareInTargetPct, '%')}`
                 : 'of the record in target',
+            id: 'operation.shareInTargetPct',
           },
         ]}
       >
@@ -63,7 +66,9 @@ export function BankSheet() {
       </div>
       <StageFields />
       <ControlFields />
-      {charts.bank === undefined ? null : (
+      {charts.bank === undefined ? (
+        <BeingDrawn />
+      ) : (
         <>
           <div className="split replay">
             <ReplayFigure replay={charts.bank.replay} />

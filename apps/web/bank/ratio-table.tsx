@@ -27,28 +27,28 @@ export function RatioTable() {
               peaks
             </th>
             <th scope="col">verdict, nearest its limit</th>
-            <th scope="col">
-              <span className="hidden">put in place</span>
-            </th>
           </tr>
         </thead>
         <tbody>
           {rows.map((row) => (
             <tr key={row.reactorPct} className={row.chosen ? 'own' : undefined}>
-              <TrialCells row={row} />
-              <td>
+              <th scope="row" className="nowrap">
+                <span className="trial">
+                  {ratioWords(row.reactorPct)}, {formatQuantity(row.ratedV, 'V', 'given')}
+                </span>
                 {row.chosen || bank === null ? (
-                  'as it stands'
+                  <span className="caption beneath">as it stands</span>
                 ) : (
                   <button
                     type="button"
-                    className="way"
+                    className="way beneath"
                     onClick={() => desk.tryBank(withRatio(bank, row.reactorPct, row.ratedV))}
                   >
                     Put in place<span className="hidden"> {ratioWords(row.reactorPct)}</span>
                   </button>
                 )}
-              </td>
+              </th>
+              <TrialCells row={row} />
             </tr>
           ))}
         </tbody>
@@ -69,16 +69,13 @@ function isMixed(bank: ReturnType<typeof bankOf>): boolean {
 }
 
 function TrialCells({ row }: { row: ReactorTrial }) {
-  const { reactorPct, ratedV, tunedOrderH, lowestPeakH, highestPeakH, verdict, worstDuty, worstRatio } = row;
+  const { tunedOrderH, lowestPeakH, highestPeakH, verdict, worstDuty, worstRatio } = row;
   const peaks =
     lowestPeakH === null || highestPeakH === null
       ? '–'
       : formatRange({ low: lowestPeakH, high: highestPeakH }, '', 'computed');
   return (
     <>
-      <th scope="row" className="nowrap">
-        {ratioWords(reactorPct)}, {formatQuantity(ratedV, 'V', 'given')}
-      </th>
       <td className="right">{tunedOrderH === null ? '–' : formatNumber(tunedOrderH)}</td>
       <td className="right nowrap">{peaks}</td>
       <td>

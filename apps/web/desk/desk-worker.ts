@@ -5,6 +5,7 @@ import { findings } from '#libs/present/findings.js';
 import { proposedWords } from '#libs/present/proposed-words.js';
 import { putInWords } from '#libs/present/put-in-words.js';
 import { fullLook, type Looked, quickLook } from './compute-look.js';
+import { takeReadersMark } from '../readers-mark.js';
 import type { DeskAnswered, DeskAsked, Look, LookAsked, Trace } from './look.js';
 import { stationCharts } from './station-charts.js';
 import { StudyCache } from './study-cache.js';
@@ -19,6 +20,8 @@ interface ColumnsSent {
   connectedKvar?: number[];
   standby?: number[];
 }
+
+takeReadersMark();
 
 const scope = self as unknown as DedicatedWorkerGlobalScope;
 let cache: StudyCache | null = null;
@@ -133,10 +136,19 @@ async function warmUp(studies: StudyCache, asked: LookAsked): Promise<void> {
 }
 
 function traceOf({ record, zone }: StudyCache): Trace {
-  return {
-    zone,
-    beginS: record.beginS,
-    activeKw: Float32Array.from(record.activeKw),
-    reactiveKvar: Float32Array.from(record.laggingKvar, (lagging, i) => lagging - record.leadingKvar[i]!),
-  };
+  const { beginS, intervalS } = record;
+  const firstS = beginS[0]!;
+  const slots = Math.round((beginS.at(-1)! - firstS) / intervalS) + 1;
+  const activeKw = new Float32Array(slots).fill(Number.NaN);
+  const reactiveKvar = new Float32Array(slots).fill(Number.NaN);
+  const gaps: Trace['gaps'] = [];
+  let next = 0;
+  for (let i = 0; i < beginS.length; i++) {
+    const slot = Math.round((beginS[i]! - firstS) / intervalS);
+    if (slot > next) gaps.push([next, slot]);
+    activeKw[slot] = record.activeKw[i]!;
+    reactiveKvar[slot] = record.laggingKvar[i]! - record.leadingKvar[i]!;
+    next = slot + 1;
+  }
+  return { zone, firstS, intervalS, activeKw, reactiveKvar, gaps };
 }

@@ -58,11 +58,17 @@ export interface Look {
   tookMs: number;
 }
 
-/** The record's own columns for a trace, thinned by nobody. */
+/** The record on its whole grid for a trace, thinned by nobody. */
 export interface Trace {
-  beginS: Float64Array;
+  /** UTC of the first slot [s] */
+  firstS: number;
+  /** width of a slot [s] */
+  intervalS: number;
+  /** a slot without a reading is NaN */
   activeKw: Float32Array;
   reactiveKvar: Float32Array;
+  /** stretches of slots without a reading, first and one after the last */
+  gaps: [from: number, to: number][];
   /** the site's offsets */
   zone: ZoneTable;
 }

@@ -32,30 +32,34 @@ export function ChartFigure({
   const heading = useId();
   const toggle = (part: typeof open) => setOpen(open === part ? null : part);
   return (
-    <section className="section" aria-labelledby={heading}>
-      <div className="plot-head">
-        <h2 id={heading}>{figure.finding}</h2>
-        <span className="ways">
-          <Toggle name="Table" isOpen={open === 'table'} onClick={() => toggle('table')} />
-          {working.length === 0 ? null : (
-            <Toggle name="Working" isOpen={open === 'working'} onClick={() => toggle('working')} />
-          )}
-          <Toggle name="Save" isOpen={open === 'save'} onClick={() => toggle('save')} />
-        </span>
+    <section className="section figure" aria-labelledby={heading}>
+      <div className="figure-head">
+        <div className="plot-head">
+          <h2 id={heading}>{figure.finding}</h2>
+          <span className="ways">
+            <Toggle name="Table" isOpen={open === 'table'} onClick={() => toggle('table')} />
+            {working.length === 0 ? null : (
+              <Toggle name="Working" isOpen={open === 'working'} onClick={() => toggle('working')} />
+            )}
+            <Toggle name="Save" isOpen={open === 'save'} onClick={() => toggle('save')} />
+          </span>
+        </div>
+        <p className="caption">{figure.caption}</p>
+        {open === 'save' ? (
+          <SaveWays figure={figure} picture={picture ?? (() => svgOf(plot.current, figure.finding))} />
+        ) : null}
       </div>
-      <p className="caption">{figure.caption}</p>
-      {open === 'save' ? (
-        <SaveWays figure={figure} picture={picture ?? (() => svgOf(plot.current, figure.finding))} />
-      ) : null}
-      <div className="plot" ref={plot}>
-        <p className="hidden">{figure.sentence}</p>
-        {children}
-        {steps ? <StepThrough figure={figure} /> : null}
-      </div>
-      {open === 'working' ? <WorkingBlocks ids={working} /> : null}
-      {open === 'table' ? <ChartTableView table={figure.table} name={figure.finding} /> : null}
-      <div className="print-only">
-        <ChartTableView table={figure.table} name={figure.finding} />
+      <div className="figure-body">
+        <div className="plot" ref={plot}>
+          <p className="hidden">{figure.sentence}</p>
+          {children}
+          {steps ? <StepThrough figure={figure} /> : null}
+        </div>
+        {open === 'working' ? <WorkingBlocks ids={working} /> : null}
+        {open === 'table' ? <ChartTableView table={figure.table} name={figure.finding} /> : null}
+        <div className="print-only">
+          <ChartTableView table={figure.table} name={figure.finding} />
+        </div>
       </div>
     </section>
   );

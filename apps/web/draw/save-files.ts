@@ -1,4 +1,5 @@
 import type { ChartTable } from '#libs/present/chart.js';
+import { inPoints } from '#libs/present/format-number.js';
 
 /** Hands a text to the browser as a file. */
 export function saveText(name: string, type: string, text: string): void {
@@ -13,7 +14,7 @@ export function saveText(name: string, type: string, text: string): void {
 /** A table as CSV for any program: plain numbers without gaps, a true minus as a hyphen. */
 export function csvOf({ columns, rows }: ChartTable): string {
   const plain = (text: string) =>
-    text
+    inPoints(text)
       .replace(/(?<=\d)\u00a0(?=\d{3})/g, '')
       .replaceAll('\u2212', '-')
       .replaceAll('\u00a0', ' ');

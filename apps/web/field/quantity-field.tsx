@@ -6,20 +6,40 @@ import { FieldFrame, refusalOf } from './field-frame.js';
 import { readTyped } from './read-typed.js';
 
 /** A quantity of the site file, typed as people type it and shown as understood. */
-export function QuantityField({
-  path,
-  label,
-  unit = '',
-  otherwise,
-}: {
+export function QuantityField(place: QuantityPlace) {
+  const { desk, state } = useDesk();
+  return (
+    <TypedQuantity
+      {...place}
+      kept={valueAt(state.document, place.path)}
+      onType={(text, read) => desk.type(place.path, text, read)}
+    />
+  );
+}
+
+/** Where a quantity stands and how it is asked for. */
+export interface QuantityPlace {
   path: string;
   label: string;
   unit?: string;
   /** what is taken where nothing is typed */
-  otherwise?: string;
+  otherwise?: string | undefined;
+}
+
+/** The field itself, wherever its value is kept. */
+export function TypedQuantity({
+  path,
+  label,
+  unit = '',
+  otherwise,
+  kept,
+  onType,
+}: QuantityPlace & {
+  kept: unknown;
+  /** a value, undefined for an emptied field, or null for a text that is none yet */
+  onType: (text: string, read: { value: number | undefined } | null) => void;
 }) {
-  const { desk, state } = useDesk();
-  const kept = valueAt(state.document, path);
+  const { state } = useDesk();
   const [text, setText] = useState<string | null>(null);
   const shown = text ?? state.typed[path] ?? textOf(kept);
   const read = shown.trim() === '' ? null : readTyped(shown, unit);
@@ -29,8 +49,8 @@ export function QuantityField({
   const type = (typed: string) => {
     setText(typed);
     const now = readTyped(typed, unit);
-    if (typed.trim() === '') desk.type(path, typed, { value: undefined });
-    else desk.type(path, typed, 'value' in now ? { value: now.value } : null);
+    if (typed.trim() === '') onType(typed, { value: undefined });
+    else onType(typed, 'value' in now ? { value: now.value } : null);
   };
   return (
     <FieldFrame path={path} label={label} unit={unit} echo={echo} refusal={refusal}>

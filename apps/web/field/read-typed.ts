@@ -13,7 +13,8 @@ export function readTyped(text: string, unit: string): Typed {
   const plain = pointed(text.trim().replace(/(?<=\d)[\s\u00a0\u2009](?=\d{3}(\D|$))/g, ''));
   if (/^[+\-−]?(\d+\.?\d*|\.\d+)$/.test(plain)) {
     const value = Number(plain.replace('−', '-'));
-    return { value, echo: text.includes(',') ? shown(text, value, unit) : null };
+    const isOwnForm = spaced(text) === spaced(formatNumber(value, 'working'));
+    return { value, echo: text.includes(',') && !isOwnForm ? shown(text, value, unit) : null };
   }
   if (unit === '') return { fault: 'Type a number.' };
   const reading = readQuantity(plain, quantityUnit(unit));
@@ -21,6 +22,10 @@ export function readTyped(text: string, unit: string): Typed {
   if (reading.fault === 'other-dimension') return { fault: `This is measured in ${unit}.` };
   if (reading.fault === 'unknown-unit') return { fault: `The unit is not known here. Type it in ${unit}.` };
   return { fault: `Type a number, with or without ${unit}.` };
+}
+
+function spaced(text: string): string {
+  return text.trim().replace(/[\u00a0\u2009]/g, ' ');
 }
 
 function quantityUnit(unit: string): string {

@@ -1,6 +1,6 @@
 import { useState } from 'react';
 import type { EstimateResult, Remark, Result } from '#libs/engine/index.js';
-import { formatQuantity, formatRange } from '#libs/present/format-number.js';
+import { formatNumber, formatQuantity, formatRange, inShownMark } from '#libs/present/format-number.js';
 import { messageOf, remarkConsequence } from '#libs/present/remark-words.js';
 import { siteAddress, stationOfPath } from '../address.js';
 import { useDesk } from '../desk/use-desk.js';
@@ -16,6 +16,8 @@ interface Point {
   /** how far it moves the figure it moves most, where that was computed */
   spread: number | null;
   effect: string;
+  /** it was assumed, and nobody asks about it */
+  isAssumed: boolean;
 }
 
 /** Everything the plan still rests on, in order of how far each moves the result, each opening its field. */
@@ -55,13 +57,32 @@ export function OpenPoints({ siteId }: { siteId: string }) {
           {most > 0 ? 'In order of how far each moves the result.' : 'Findings first, then what was assumed.'} Open one
           to settle it where it is entered.
         </p>
-        <ul>
-          {points.map((point) => (
-            <PointRow key={point.key} point={point} most={most} siteId={siteId} />
-          ))}
-        </ul>
+        <PointList points={points.filter((point) => !isQuiet(point))} most={most} siteId={siteId} />
+        <QuietPoints points={points.filter(isQuiet)} siteId={siteId} />
       </div>
     </aside>
+  );
+}
+
+function PointList({ points, most, siteId }: { points: readonly Point[]; most: number; siteId: string }) {
+  return (
+    <ul>
+      {points.map((point) => (
+        <PointRow key={point.key} point={point} most={most} siteId={siteId} />
+      ))}
+    </ul>
+  );
+}
+
+/** What was assumed and moves no deciding figure that was worked out: behind one line, so that the others are read. */
+function QuietPoints({ points, siteId }: { points: readonly Point[]; siteId: string }) {
+  if (points.length === 0) return null;
+  const count = formatNumber(points.length, 'given');
+  return (
+    <details className="quiet-points">
+      <summary className="way">{`${count} ${points.length === 1 ? 'assumption' : 'assumptions'} without a worked-out effect`}</summary>
+      <PointList points={points} most={0} siteId={siteId} />
+    </details>
   );
 }
 
@@ -110,30 +131,37 @@ export function openPoints({ reasons, record, assumptions, duties }: Result | Es
             path: 'loads.distorting',
             spread: null,
             effect: '',
+            isAssumed: false,
           },
         ];
   const unsettled = reasons.filter(({ code }) => messageOf(code)?.level !== 'information');
   const points = [
-    ...unsettled.map(pointOf),
+    ...unsettled.map((remark) => pointOf(remark, false)),
     ...unjudged,
-    ...(record?.notes ?? []).map(pointOf),
-    ...assumptions.map(pointOf),
+    ...(record?.notes ?? []).map((remark) => pointOf(remark, false)),
+    ...assumptions.map((remark) => pointOf(remark, true)),
   ];
   return points
     .map((point, at) => ({ ...point, key: `${at}:${point.key}` }))
     .sort((a, b) => (b.spread ?? -1) - (a.spread ?? -1));
 }
 
-function pointOf(remark: Remark): Point {
+function pointOf(remark: Remark, isAssumed: boolean): Point {
   const { code, path, text, effect } = remark;
   return {
     key: code,
-    text: text.replace(/\.$/, ''),
+    text: inShownMark(text.replace(/\.$/, '')),
     why: remarkConsequence(remark),
     path,
     spread: effect === null ? null : spreadOf(effect),
     effect: effect === null ? '' : effect.changesVerdict ? DECIDES : rangeWords(effect),
+    isAssumed,
   };
+}
+
+/** Folded away: an assumption whose effect was not worked out, or is nothing beside the others. */
+function isQuiet({ isAssumed, spread, effect }: Point): boolean {
+  return isAssumed && spread === null && effect === '';
 }
 
 // A duty's effect is a share of its limit; an amount of money is brought to a share of itself.

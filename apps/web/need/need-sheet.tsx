@@ -1,5 +1,6 @@
 import { formatNumber, formatQuantity } from '#libs/present/format-number.js';
 import { useDesk } from '../desk/use-desk.js';
+import { BeingDrawn } from '../draw/being-drawn.js';
 import { Plot } from '../draw/plot.js';
 import { YearFigure } from '../draw/year-figure.js';
 import { ChoiceField } from '../field/choice-field.js';
@@ -23,8 +24,8 @@ export function NeedSheet() {
       <Headline
         figures={[
           { value: maxKvar, unit: 'kvar', under: 'highest', id: 'requirement.maxKvar' },
-          { value: p95Kvar, unit: 'kvar', under: '95\u00a0% of the record' },
-          { value: meanKvar, unit: 'kvar', under: 'mean' },
+          { value: p95Kvar, unit: 'kvar', under: '95\u00a0% of the record', id: 'requirement.p95Kvar' },
+          { value: meanKvar, unit: 'kvar', under: 'mean', id: 'requirement.meanKvar' },
           {
             value: result.record.powerFactorLagging,
             under: 'factor of the record',
@@ -52,7 +53,7 @@ export function NeedSheet() {
           />
         )}
       </div>
-      {charts === undefined ? null : <YearFigure map={charts.year} working={['requirement.maxKvar']} />}
+      {charts === undefined ? <BeingDrawn /> : <YearFigure map={charts.year} working={['requirement.maxKvar']} />}
       <section className="section" aria-labelledby="target-terms">
         <h2 id="target-terms">What the target asks for</h2>
         <div className="fields">

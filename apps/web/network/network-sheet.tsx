@@ -5,12 +5,17 @@ import { bankOf } from '../desk/desk-state.js';
 import type { StationCharts } from '../desk/look.js';
 import { useDesk } from '../desk/use-desk.js';
 import { Bars } from '../draw/bars.js';
+import { BeingDrawn } from '../draw/being-drawn.js';
 import { Plot } from '../draw/plot.js';
 import { latestResult } from '../line/latest-result.js';
 import { NoRecord } from '../record/no-record.js';
 import { Headline } from '../working/headline.js';
+import { AgeingTable } from './ageing-table.js';
+import { DeviceTable } from './device-table.js';
 import { Firmness } from './firmness.js';
+import { FittedFields } from './fitted-fields.js';
 import { MarginTable } from './margin-table.js';
+import { MeasuredTable } from './measured-table.js';
 
 /** Resonance and limits: impedance over order, every level and order against its limit, duties, other ratios. */
 export function NetworkSheet() {
@@ -37,19 +42,23 @@ export function NetworkSheet() {
             id: 'network.shortCircuitMva',
           },
           { value: peak, under: 'parallel resonance, all stages in', id: 'network.parallelOrderClosedFormH' },
-          { value: worst, unit: '%', under: 'distortion, worst case' },
-          { value: without, unit: '%', under: 'with no bank' },
+          { value: worst, unit: '%', under: 'distortion, worst case', id: 'network.worstDistortionPct' },
+          { value: without, unit: '%', under: 'with no bank', id: 'network.distortionWithoutBankPct' },
         ]}
       >
         {headline(result, charts)}
       </Headline>
-      {charts === undefined ? null : <Pictures charts={charts} />}
+      {charts === undefined ? <BeingDrawn /> : <Pictures charts={charts} />}
       {bankOf(state) === null ? null : (
         <>
           <RatioTable />
           <Firmness />
+          <DeviceTable result={result} />
+          <FittedFields />
+          <AgeingTable ageing={result.ageing} />
         </>
       )}
+      <MeasuredTable measured={result.measured} />
     </>
   );
 }

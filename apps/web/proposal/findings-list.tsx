@@ -1,3 +1,4 @@
+import { type Finding, findingNumbers } from '#libs/present/findings.js';
 import type { FindingLevel } from '#libs/present/message.js';
 import { useDesk } from '../desk/use-desk.js';
 
@@ -18,20 +19,23 @@ export function FindingsList() {
       <h2 id="findings">Findings on the paper</h2>
       <p className="caption">The more ink a level carries, the graver it is.</p>
       <ul>
-        {findings.map(({ level, what, value, limit, source, consequence }, at) => (
-          <li key={at} className="finding">
-            <span className={LOOK[level]}>{level}</span>
+        {findings.map((finding) => (
+          <li key={finding.id} className="finding">
+            <span className={LOOK[finding.level]}>{finding.level}</span>
             <div>
-              <p>{what}</p>
-              <p className="caption">
-                {[value === '' ? '' : limit === '' ? value : `${value}, limit ${limit}`, source, consequence]
-                  .filter((part) => part !== '')
-                  .join(' · ')}
-              </p>
+              <p>{finding.what}</p>
+              <p className="caption">{besides(finding)}</p>
             </div>
           </li>
         ))}
       </ul>
     </section>
   );
+}
+
+/** Value, limit, source and consequence on one line. */
+function besides(finding: Finding): string {
+  const { value, limit } = findingNumbers(finding);
+  const numbers = limit === '' ? value : `${value}, limit ${limit}`;
+  return [numbers, finding.source, finding.consequence].filter((part) => part !== '').join(' · ');
 }

@@ -1,4 +1,4 @@
-import { formatQuantity } from '#libs/present/format-number.js';
+import { formatQuantity, inShownMark } from '#libs/present/format-number.js';
 import { NO_PERMISSION } from '#libs/present/verdict-words.js';
 import type { RevisionHeadShown } from '../api/shown.js';
 import { isChanged, staleFrom } from '../desk/desk-state.js';
@@ -47,7 +47,7 @@ export function ProposalSheet() {
           { value: revision, under: 'revision, draft', digits: 'given' },
         ]}
       >
-        {kept.kind === 'plan' ? 'Proposed' : 'Judged'}: {proposed}
+        {kept.kind === 'plan' ? 'Proposed' : 'Judged'}: {inShownMark(proposed)}
       </Headline>
       {isOlder ? (
         <p className="notice">
@@ -104,7 +104,7 @@ function Revisions({ revisions }: { revisions: readonly RevisionHeadShown[] }) {
             <th scope="row">{one.revision}</th>
             <td className="nowrap">{one.createdAt.slice(0, 16).replace('T', ' ')} UTC</td>
             <td>
-              {one.kind === 'plan' ? 'Proposed' : 'Judged'}: {one.proposed}
+              {one.kind === 'plan' ? 'Proposed' : 'Judged'}: {inShownMark(one.proposed)}
             </td>
             <td>
               <VerdictWords verdict={one.verdict} />
@@ -131,7 +131,7 @@ function Changes({ revisions }: { revisions: readonly RevisionHeadShown[] }) {
       <div className="versions">
         <div>
           <p className="caption">revision {before.revision}</p>
-          <p>{before.proposed}</p>
+          <p>{inShownMark(before.proposed)}</p>
           <p className="row gap">
             <VerdictWords verdict={before.verdict} />
           </p>
@@ -141,7 +141,7 @@ function Changes({ revisions }: { revisions: readonly RevisionHeadShown[] }) {
           <p className="caption">
             revision {now.revision}, {kvar}
           </p>
-          <p>{now.proposed}</p>
+          <p>{inShownMark(now.proposed)}</p>
           <p className="row gap">
             <VerdictWords verdict={now.verdict} />
           </p>

@@ -1,6 +1,6 @@
 import { formatNumber } from '#libs/present/format-number.js';
-import { formatMoment } from '#libs/present/local-stamp.js';
 import { linearAxis, placeOnAxis } from '#libs/present/ticks.js';
+import { timeTicks } from '#libs/present/time-ticks.js';
 import type { Trace } from '../desk/look.js';
 import type { TracePyramid } from './trace-pyramid.js';
 
@@ -16,6 +16,8 @@ export interface TracePicture {
   kw: TracePyramid;
   kvar: TracePyramid;
   view: TraceView;
+  /** stretches of slots whose zeros are suspect */
+  suspect: readonly (readonly [from: number, to: number])[];
   width: number;
   height: number;
 }
@@ -52,8 +54,67 @@ export function drawTrace(canvas: HTMLCanvasElement, picture: TracePicture): voi
     { column: kw, unit: 'kW', top: GAP - 6, bottom: middle, colour: colour('--ink') },
     { column: kvar, unit: 'kvar', top: middle + GAP, bottom: height - BOTTOM, colour: colour('--ink') },
   ];
+  drawGaps(pen, picture, { fill: colour('--faint'), line: colour('--soft') });
   for (const strip of strips) drawStrip(pen, picture, strip, { soft: colour('--soft'), hair: colour('--hair') });
-  drawTimes(pen, picture, colour('--soft'));
+  drawSuspect(pen, picture, colour('--watch'));
+  drawTimes(pen, picture, { soft: colour('--soft'), hair: colour('--hair') });
+}
+
+/** Where a stretch of slots lies in the picture, null where it is out of view. */
+function placeOf(
+  { view, width }: TracePicture,
+  [from, to]: readonly [number, number],
+): [x: number, wide: number] | null {
+  if (to <= view.from || from >= view.to) return null;
+  const perSlot = (width - LEFT) / (view.to - view.from);
+  const left = LEFT + Math.max(0, from - view.from) * perSlot;
+  const right = LEFT + Math.min(view.to - view.from, to - view.from) * perSlot;
+  return [left, Math.max(1, right - left)];
+}
+
+/** What was not read: a quiet fill with strokes across, wide or narrow. */
+function drawGaps(
+  pen: CanvasRenderingContext2D,
+  picture: TracePicture,
+  { fill, line }: Record<'fill' | 'line', string>,
+): void {
+  const top = GAP - 6;
+  const bottom = picture.height - BOTTOM;
+  pen.lineWidth = 1;
+  for (const gap of picture.trace.gaps) {
+    const place = placeOf(picture, gap);
+    if (place === null) continue;
+    const [x, wide] = place;
+    pen.fillStyle = fill;
+    pen.fillRect(x, top, wide, bottom - top);
+    pen.save();
+    pen.beginPath();
+    pen.rect(x, top, wide, bottom - top);
+    pen.clip();
+    pen.strokeStyle = line;
+    pen.beginPath();
+    for (let at = x - (bottom - top); at < x + wide; at += 9) {
+      pen.moveTo(at, bottom);
+      pen.lineTo(at + bottom - top, top);
+    }
+    pen.stroke();
+    pen.restore();
+    if (wide < 70) continue;
+    pen.fillStyle = line;
+    pen.textAlign = 'center';
+    pen.fillText('no reading', x + wide / 2, top - 8);
+  }
+}
+
+/** Suspect zeros carry a stroke along the foot of both strips. */
+function drawSuspect(pen: CanvasRenderingContext2D, picture: TracePicture, colour: string): void {
+  const middle = (picture.height - BOTTOM) / 2;
+  pen.fillStyle = colour;
+  for (const stretch of picture.suspect) {
+    const place = placeOf(picture, stretch);
+    if (place === null) continue;
+    for (const y of [middle, picture.height - BOTTOM]) pen.fillRect(place[0], y - 1, place[1], 3);
+  }
 }
 
 function drawStrip(
@@ -63,7 +124,7 @@ function drawStrip(
   { soft, hair }: { soft: string; hair: string },
 ): void {
   const { view, width } = picture;
-  const { least, most } = column.extent(Math.floor(view.from), Math.ceil(view.to));
+  const { least, most } = finite(column.extent(Math.floor(view.from), Math.ceil(view.to)));
   const axis = linearAxis('', unit, { least: Math.min(0, least), most: Math.max(most, 1e-9) }, 3);
   const y = (value: number) => bottom - placeOnAxis(axis, value) * (bottom - top);
   pen.textAlign = 'right';
@@ -80,24 +141,43 @@ function drawStrip(
   pen.strokeStyle = colour;
   pen.lineWidth = 1.2;
   pen.beginPath();
+  let isDown = false;
   for (let pixel = 0; pixel < across; pixel++) {
     const from = Math.floor(view.from + (pixel / across) * span);
     const to = Math.max(from + 1, Math.floor(view.from + ((pixel + 1) / across) * span));
     const found = column.extent(from, to);
-    if (pixel === 0) pen.moveTo(LEFT, y(found.most));
-    pen.lineTo(LEFT + pixel, y(found.most));
+    if (found.most < found.least) {
+      isDown = false;
+      continue;
+    }
+    if (isDown) pen.lineTo(LEFT + pixel, y(found.most));
+    else pen.moveTo(LEFT + pixel, y(found.most));
+    isDown = true;
     if (found.least !== found.most) pen.lineTo(LEFT + pixel, y(found.least));
   }
   pen.stroke();
 }
 
-function drawTimes(pen: CanvasRenderingContext2D, { trace, view, width, height }: TracePicture, colour: string): void {
-  pen.fillStyle = colour;
-  const count = Math.max(2, Math.floor((width - LEFT) / 150));
-  const last = trace.beginS.length - 1;
-  for (let k = 0; k <= count; k++) {
-    const index = Math.min(last, Math.round(view.from + ((view.to - view.from) * k) / count));
-    pen.textAlign = k === 0 ? 'left' : k === count ? 'right' : 'center';
-    pen.fillText(formatMoment(trace.zone, trace.beginS[index]!), LEFT + ((width - LEFT) * k) / count, height - 8);
+/** A view without any reading has no extent of its own. */
+function finite({ least, most }: { least: number; most: number }): { least: number; most: number } {
+  return most < least ? { least: 0, most: 1 } : { least, most };
+}
+
+function drawTimes(
+  pen: CanvasRenderingContext2D,
+  picture: TracePicture,
+  { soft, hair }: Record<'soft' | 'hair', string>,
+): void {
+  const { trace, view, width, height } = picture;
+  const { firstS, intervalS, zone } = trace;
+  const span = { fromS: firstS + view.from * intervalS, toS: firstS + view.to * intervalS };
+  const across = width - LEFT;
+  for (const { atS, text } of timeTicks(zone, span, Math.max(2, Math.floor(across / 76)))) {
+    const x = LEFT + ((atS - span.fromS) / (span.toS - span.fromS)) * across;
+    pen.fillStyle = hair;
+    pen.fillRect(x, height - BOTTOM, 1, 5);
+    pen.fillStyle = soft;
+    pen.textAlign = x < LEFT + 30 ? 'left' : x > width - 30 ? 'right' : 'center';
+    pen.fillText(text, x, height - 8);
   }
 }

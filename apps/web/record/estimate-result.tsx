@@ -1,5 +1,5 @@
 import type { EstimateResult } from '#libs/engine/index.js';
-import { formatNumber, formatQuantity } from '#libs/present/format-number.js';
+import { formatNumber, formatQuantity, inShownMark } from '#libs/present/format-number.js';
 import { formatMonth } from '#libs/present/local-stamp.js';
 import { remarkConsequence } from '#libs/present/remark-words.js';
 import { NO_PERMISSION } from '#libs/present/verdict-words.js';
@@ -19,14 +19,35 @@ export function EstimateResultSheet({ result, proposed }: { result: EstimateResu
         figures={[
           ...(requirement.lowerKvar === null
             ? []
-            : [{ value: requirement.lowerKvar, unit: 'kvar', under: 'lower bound, estimated' }]),
+            : [
+                {
+                  value: requirement.lowerKvar,
+                  unit: 'kvar',
+                  under: 'lower bound, estimated',
+                  id: boundFigure(result, 'lowerKvar'),
+                },
+              ]),
           ...(requirement.upperKvar === null
             ? []
-            : [{ value: requirement.upperKvar, unit: 'kvar', under: 'upper bound, estimated' }]),
+            : [
+                {
+                  value: requirement.upperKvar,
+                  unit: 'kvar',
+                  under: 'upper bound, estimated',
+                  id: boundFigure(result, 'upperKvar'),
+                },
+              ]),
           ...(requirement.listKvar === null
             ? []
-            : [{ value: requirement.listKvar, unit: 'kvar', under: 'by the list, estimated' }]),
-          { value: result.bank.effectiveKvar, unit: 'kvar', under: 'the bank, effective' },
+            : [
+                {
+                  value: requirement.listKvar,
+                  unit: 'kvar',
+                  under: 'by the list, estimated',
+                  id: 'estimate.equipment.neededKvar',
+                },
+              ]),
+          { value: result.bank.effectiveKvar, unit: 'kvar', under: 'the bank, effective', id: 'bank.effectiveKvar' },
         ]}
       >
         An estimate from {estimate.basis}, without a meter’s record. Proposed, {proposed}
@@ -42,7 +63,7 @@ export function EstimateResultSheet({ result, proposed }: { result: EstimateResu
         <ul>
           {result.reasons.map((reason, at) => (
             <li key={at}>
-              {reason.text} <span className="soft">{remarkConsequence(reason)}</span>
+              {inShownMark(reason.text)} <span className="soft">{remarkConsequence(reason)}</span>
             </li>
           ))}
         </ul>
@@ -57,6 +78,12 @@ export function EstimateResultSheet({ result, proposed }: { result: EstimateResu
       </section>
     </>
   );
+}
+
+/** The figure of the bill a bound comes from. */
+function boundFigure({ requirement, estimate }: EstimateResult, bound: 'lowerKvar' | 'upperKvar'): string {
+  const at = estimate.months.findIndex((month) => month[bound] === requirement[bound]);
+  return `estimate.months[${at}].${bound}`;
 }
 
 function MonthTable({ result }: { result: EstimateResult }) {

@@ -1,3 +1,4 @@
+import { inShownMark } from '#libs/present/format-number.js';
 import { siteAddress, useAddress } from '../address.js';
 import { useDesk } from '../desk/use-desk.js';
 import { keptEstimate } from '../line/kept-estimate.js';
@@ -10,7 +11,9 @@ export function NoRecord({ what }: { what: string }) {
   const siteId = address.page === 'site' ? address.siteId : '';
   const estimate = keptEstimate(state);
   if (estimate !== null && state.kept !== null)
-    return <EstimateResultSheet result={estimate} proposed={state.kept.proposed.replace(/^estimate: /, '')} />;
+    return (
+      <EstimateResultSheet result={estimate} proposed={inShownMark(state.kept.proposed.replace(/^estimate: /, ''))} />
+    );
   return (
     <>
       <h1>No meter record yet</h1>

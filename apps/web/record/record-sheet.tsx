@@ -1,24 +1,24 @@
-import { formatNumber, formatQuantity } from '#libs/present/format-number.js';
 import { siteAddress } from '../address.js';
+import type { RecordShown } from '../api/shown.js';
 import { useDesk } from '../desk/use-desk.js';
-import { YearFigure } from '../draw/year-figure.js';
 import { ChoiceField } from '../field/choice-field.js';
 import { valueAt } from '../field/document-path.js';
 import { QuantityField } from '../field/quantity-field.js';
 import { TextField } from '../field/text-field.js';
-import { Headline } from '../working/headline.js';
 import { EstimateFields } from './estimate-fields.js';
 import { MeterFileDrop } from './meter-file-drop.js';
+import { RawBesideRead } from './raw-beside-read.js';
 import { ReadingFindings } from './reading-findings.js';
+import { RecordPictures } from './record-pictures.js';
 import { RecordRevisions } from './record-revisions.js';
-import { TraceFigure } from './trace-figure.js';
-
-const DAY_S = 86_400;
+import { stepWords } from './step-words.js';
+import { useTrace } from './use-trace.js';
 
 /** The meter's record: what was read, how it was understood, the year at a glance. */
 export function RecordSheet() {
-  const { desk, state } = useDesk();
+  const { state } = useDesk();
   const record = state.records[0];
+  const trace = useTrace(record?.id);
   return (
     <>
       {record === undefined ? (
@@ -26,67 +26,57 @@ export function RecordSheet() {
           <h1>Drop a meter file, and the year is read from it; or enter bills or equipment below.</h1>
         </div>
       ) : (
-        <Headline
-          figures={[
-            { value: record.record.intervals, under: 'intervals read', digits: 'given' },
-            { value: record.record.missing, under: 'missing', digits: 'given' },
-            { value: record.record.maxKw, unit: 'kW', under: 'highest' },
-            { value: record.record.powerFactorLagging, under: 'factor of the record', id: 'record.powerFactorLagging' },
-          ]}
-        >
-          {`${lengthWords(record.record)} in steps of ${stepWords(record.record.intervalS)}${record.record.missing === 0 ? ', without a gap' : ''}.`}
-        </Headline>
+        <RecordPictures record={record} trace={trace} />
       )}
-      {state.charts.record === undefined ? null : (
-        <YearFigure map={state.charts.record.year} working={['record.powerFactorLagging', 'record.powerFactorNet']} />
-      )}
-      {record === undefined ? null : <TraceFigure key={record.id} recordId={record.id} />}
       <div className="split halves">
         <MeterFileDrop />
-        <section className="section" aria-labelledby="clock">
-          <h2 id="clock">How the record is understood</h2>
-          <div className="fields">
-            <TextField path="timeZone" label="zone of the site" />
-            <ChoiceField
-              path="recordedBank.state"
-              label="a bank, while it was taken"
-              otherwise="none, assumed"
-              choices={[
-                ['none', 'there was none'],
-                ['out', 'stood out'],
-                ['fixed', 'was in, fixed'],
-                ['logged', 'is in the record'],
-                ['switching', 'the bank was switching'],
-                ['unknown', 'not known'],
-              ]}
-            />
-            {valueAt(state.document, 'recordedBank.state') === 'fixed' ? (
-              <QuantityField path="recordedBank.kvar" label="it gave" unit="kvar" />
-            ) : null}
-          </div>
-          <p className="row gap">
-            <a href={siteAddress(desk.siteId, 'record').replace('/record', '/survey')}>
-              A sheet for the visit, to print
-            </a>
-          </p>
-        </section>
+        <Understanding record={record} />
       </div>
       {record === undefined ? null : (
-        <ReadingFindings record={record} timeZone={String(valueAt(state.document, 'timeZone'))} />
+        <>
+          <ReadingFindings record={record} timeZone={String(valueAt(state.document, 'timeZone'))} />
+          <RawBesideRead record={record} trace={trace} />
+          <RecordRevisions record={record} records={state.records} />
+        </>
       )}
-      {record === undefined ? null : <RecordRevisions record={record} records={state.records} />}
       {record === undefined || valueAt(state.document, 'estimate') !== undefined ? <EstimateFields /> : null}
     </>
   );
 }
 
-function lengthWords({ beginS, endS }: { beginS: number; endS: number }): string {
-  const days = Math.round((endS - beginS) / DAY_S);
-  return days >= 364 && days <= 367 ? 'A year of readings' : `${formatNumber(days, 'given')} days of readings`;
-}
-
-function stepWords(intervalS: number): string {
-  return intervalS % 60 === 0
-    ? formatQuantity(intervalS / 60, 'min', 'given')
-    : formatQuantity(intervalS, 's', 'given');
+/** By which clock and convention the record is read, and what stood at the bus meanwhile. */
+function Understanding({ record }: { record: RecordShown | undefined }) {
+  const { desk, state } = useDesk();
+  return (
+    <section className="section" aria-labelledby="clock">
+      <h2 id="clock">How the record is understood</h2>
+      {record === undefined ? null : (
+        <p className="caption">
+          {`Each interval is ${stepWords(record.record.intervalS)} long, named by its beginning, and holds the mean over it. Times are those of the clock of ${String(valueAt(state.document, 'timeZone'))}.`}
+        </p>
+      )}
+      <div className="fields">
+        <TextField path="timeZone" label="zone of the site" />
+        <ChoiceField
+          path="recordedBank.state"
+          label="a bank, while it was taken"
+          otherwise="none, assumed"
+          choices={[
+            ['none', 'there was none'],
+            ['out', 'stood out'],
+            ['fixed', 'was in, fixed'],
+            ['switching', 'was switching'],
+            ['logged', 'is in the record'],
+            ['unknown', 'not known'],
+          ]}
+        />
+        {valueAt(state.document, 'recordedBank.state') === 'fixed' ? (
+          <QuantityField path="recordedBank.kvar" label="it gave" unit="kvar" />
+        ) : null}
+      </div>
+      <p className="row gap">
+        <a href={siteAddress(desk.siteId, 'record').replace('/record', '/survey')}>A sheet for the visit, to print</a>
+      </p>
+    </section>
+  );
 }

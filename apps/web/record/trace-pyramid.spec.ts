@@ -32,4 +32,11 @@ describe('the least and greatest of a stretch of the record', () => {
       expect(least).toBeGreaterThanOrEqual(around.reduce((a, b) => Math.min(a, b)));
     }
   });
+
+  it('pass over what was not read, and are none where nothing was', () => {
+    const holed = Float32Array.from({ length: 5000 }, (_, i) => (i >= 1000 && i < 4000 ? Number.NaN : i));
+    const over = new TracePyramid(holed);
+    expect(over.extent(950, 1050)).toEqual({ least: 950, most: 999 });
+    expect(over.extent(2000, 2010)).toEqual({ least: Number.POSITIVE_INFINITY, most: Number.NEGATIVE_INFINITY });
+  });
 });

@@ -5,7 +5,7 @@ const WIDE = 16;
 export class TracePyramid {
   readonly #storeys: { least: Float32Array; most: Float32Array }[];
 
-  /** @param column values, NaN-free */
+  /** @param column values; NaN where there is none */
   constructor(column: Float32Array) {
     this.#storeys = [{ least: column, most: column }];
     for (let below = this.#storeys[0]!; below.least.length > WIDE; below = this.#storeys.at(-1)!) {
@@ -14,7 +14,8 @@ export class TracePyramid {
   }
 
   /**
-   * Least and greatest between two indices, widened to whole cells where that is within a pixel.
+   * Least and greatest between two indices, widened to whole cells where that is within a pixel; without any value
+   * +∞ and −∞.
    * @param from first index
    * @param to one after the last
    */

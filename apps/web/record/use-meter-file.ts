@@ -6,6 +6,7 @@ import { NoConnection, Refused } from '../api/ask.js';
 import type { JobShown, RecordShown } from '../api/shown.js';
 import { keptJob } from '../desk/follow-job.js';
 import type { SiteDesk } from '../desk/site-desk.js';
+import { keepRawRows, type RawRows, rowsAtEnds } from './raw-rows.js';
 import { followImport, type Listening, type Said, sendMeterFile } from './send-meter-file.js';
 
 /** How far the reading of a dropped file is, and what it wants to know. */
@@ -38,14 +39,17 @@ export function useMeterFile(desk: SiteDesk) {
   const [state, setState] = useState(NOTHING);
   const leaving = useRef(new AbortController());
   const wait = useCallback(
-    async (begin: (listening: Listening) => Promise<RecordShown | null>) => {
+    async (begin: (listening: Listening) => Promise<RecordShown | null>, rows?: Promise<RawRows | null>) => {
       const { signal } = leaving.current;
       const put = (part: Partial<MeterFileState>) => {
         if (!signal.aborted) setState((before) => ({ ...before, ...part }));
       };
       try {
         const read = await begin({ moved: (job) => put({ job }), signal });
-        if (read !== null) await desk.recordAdded();
+        if (read !== null) {
+          keepRawRows(read.id, rows === undefined ? null : await rows);
+          await desk.recordAdded();
+        }
         put({ read });
       } catch (error) {
         const problem = error instanceof Refused ? error.problem : null;
@@ -68,7 +72,7 @@ export function useMeterFile(desk: SiteDesk) {
   }, [desk, wait]);
   const read = (file: File, said: Said) => {
     setState({ ...NOTHING, file, said, isReading: true });
-    void wait((listening) => sendMeterFile(desk.siteId, file, said, listening));
+    void wait((listening) => sendMeterFile(desk.siteId, file, said, listening), rowsAtEnds(file));
   };
   /** Reads the same file again, with more said about it. */
   const answer = ({ answers = {}, keptMap }: { answers?: MeterMap; keptMap?: string }) => {

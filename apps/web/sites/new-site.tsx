@@ -52,7 +52,7 @@ export function NewSite() {
           void create(blankDocument(values));
         }}
       >
-        <div className="fields">
+        <div className="fields nameplates">
           {BLANK.map((field) => (
             <BlankInput
               key={field.path}

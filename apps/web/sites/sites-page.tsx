@@ -1,4 +1,5 @@
 import { useCallback, useEffect, useState } from 'react';
+import { inShownMark } from '#libs/present/format-number.js';
 import { siteAddress } from '../address.js';
 import { ask, NoConnection, Refused } from '../api/ask.js';
 import type { SiteListed, SiteShown } from '../api/shown.js';
@@ -109,7 +110,7 @@ function SiteRow({ site, onChange, onRemove }: { site: SiteListed; onChange: () 
         <a className="title" href={siteAddress(site.id, site.latest === null ? 'record' : 'bank')}>
           {site.name}
         </a>
-        <p className="caption">{site.latest === null ? 'no plan yet' : site.latest.proposed}</p>
+        <p className="caption">{site.latest === null ? 'no plan yet' : inShownMark(site.latest.proposed)}</p>
       </div>
       <div>
         {site.latest === null ? null : <VerdictWords verdict={site.latest.verdict} />}

@@ -41,7 +41,7 @@ export function LoadFields() {
           <QuantityField path="loads.dampingKw.min" label="at the least" unit="kW" otherwise="0, assumed" />
           <ChoiceField
             path="loads.summation"
-            label="harmonics of several loads add"
+            label="several loads add"
             otherwise="by exponent, assumed"
             choices={[
               ['exponent', 'by exponent'],

@@ -1,12 +1,13 @@
 import type { Figure } from '#libs/engine/index.js';
 import { formatNumber, GAP } from '#libs/present/format-number.js';
 import { useDesk } from '../desk/use-desk.js';
+import { keptEstimate } from '../line/kept-estimate.js';
 import { latestResult } from '../line/latest-result.js';
 
 /** The working of several figures. */
 export function WorkingBlocks({ ids }: { ids: readonly string[] }) {
   const { state } = useDesk();
-  const figures = latestResult(state)?.figures ?? [];
+  const figures = (latestResult(state) ?? keptEstimate(state))?.figures ?? [];
   const found = ids.flatMap((id) =>
     figures.filter((figure) => figure.id === id || (id.endsWith('*') && figure.id.startsWith(id.slice(0, -1)))),
   );

@@ -62,6 +62,8 @@ export class DutyRow {
   readonly head: DutyHead;
   #worst: { value: number; limit: number | null; ratio: number | null; place: Place } | null = null;
   #verdict: Verdict | null = null;
+  /** a ratio beyond this is the worst so far */
+  #leastKept = -1;
 
   /** @param head name, group, unit, source and threshold of the row */
   constructor(head: DutyHead) {
@@ -78,9 +80,30 @@ export class DutyRow {
   take(value: number, limit: number, place: Place, judge?: (ratio: number) => Verdict): void {
     const ratio = value / limit;
     const verdict = judge === undefined ? ratioVerdict(ratio, this.head.nearRatio) : judge(ratio);
-    this.#verdict = this.#verdict === null ? verdict : graver(this.#verdict, verdict);
-    const least = this.#worst === null ? -1 : this.#worst.ratio! * (1 + WORSE_SHARE);
-    if (ratio > least) this.#worst = { value, limit, ratio, place };
+    if (this.counts(ratio, verdict)) this.keep(value, limit, place);
+  }
+
+  /**
+   * Counts a verdict. Apart from `keep`, so that a place is made up only for what is kept: rows are met at every flow.
+   * @param ratio value/limit
+   * @param verdict of the value
+   * @returns true where the ratio is the largest so far, and `keep` is to follow
+   */
+  counts(ratio: number, verdict: Verdict): boolean {
+    if (verdict !== this.#verdict) this.#verdict = this.#verdict === null ? verdict : graver(this.#verdict, verdict);
+    return ratio > this.#leastKept;
+  }
+
+  /**
+   * Keeps a value as the worst so far.
+   * @param value in the row's unit
+   * @param limit in the row's unit, > 0
+   * @param place where it was met
+   */
+  keep(value: number, limit: number, place: Place): void {
+    const ratio = value / limit;
+    this.#worst = { value, limit, ratio, place };
+    this.#leastKept = ratio * (1 + WORSE_SHARE);
   }
 
   /**
@@ -89,8 +112,15 @@ export class DutyRow {
    * @param place where it was met
    */
   takeUnjudged(value: number, place: Place): void {
-    if (this.#worst !== null && value <= this.#worst.value * (1 + WORSE_SHARE)) return;
-    this.#worst = { value, limit: null, ratio: null, place };
+    if (this.isMost(value)) this.#worst = { value, limit: null, ratio: null, place };
+  }
+
+  /**
+   * @param value in the row's unit
+   * @returns true where it is the largest so far of a row that isn't judged
+   */
+  isMost(value: number): boolean {
+    return this.#worst === null || value > this.#worst.value * (1 + WORSE_SHARE);
   }
 
   /** @returns the row, or null where nothing was taken */

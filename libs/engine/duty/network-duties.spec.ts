@@ -12,7 +12,7 @@ const supply = {
 };
 const loads = {
   motorSharePct: 60,
-  distorting: [],
+  distorting: [{ name: 'drives', fundamentalA: 100, orders: [{ orderH: 11, pct: 10 }] }],
   backgroundPct: [],
   dampingKw: { max: 0, min: 0 },
   summation: 'exponent' as const,

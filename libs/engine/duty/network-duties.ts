@@ -3,7 +3,7 @@ import type { NetworkModel } from '../network/network-model.js';
 import { type CurrentLimits, chosenCurrentLimits } from './current-limits.js';
 import { type Duty, DutyRow, NEAR_RATIO, type Place, ratioVerdict } from './duty-row.js';
 import { type LimitChoice, limitChoice } from './limit-editions.js';
-import type { RuleSet, Verdict } from './rules.js';
+import type { RuleSet } from './rules.js';
 import { chosenVoltageLimits, type VoltageLimits } from './voltage-limits.js';
 
 /** A limit exceeded without the bank already counts against the bank only beyond this share of the limit. */
@@ -23,16 +23,15 @@ interface Baseline {
   sourcePct: Float64Array;
 }
 
-/** Voltages at one point, beside the same without the bank and their limits. */
-interface MetVoltages extends BusFlow {
-  without: { distortionPct: number; voltagePct: Float64Array };
-  limits: VoltageLimits<number | null>;
-  rows: VoltageRows;
-}
-
 interface VoltageRows {
   distortion: DutyRow;
   voltage: DutyRow;
+}
+
+/** The orders present that have a limit, and the limit of each [%]; one length. */
+interface JudgedOrders {
+  places: Int32Array;
+  limitPct: Float64Array;
 }
 
 /** Limits of the network at the bus. */
@@ -73,6 +72,7 @@ export class NetworkDuties {
   readonly #limits: NetworkLimits;
   readonly #known: boolean;
   readonly #baselines: Baseline[] = [];
+  readonly #judged: Record<'voltage' | 'primary' | 'current', JudgedOrders>;
   readonly #rows: Record<'currentDistortion' | 'current', DutyRow> & { buses: VoltageRows; primary: VoltageRows };
   /** exceeded somewhere, and by no more than without the bank */
   exceededAlready = false;
@@ -89,6 +89,12 @@ export class NetworkDuties {
     const head = (name: string, source: string): DutyRow =>
       new DutyRow({ name, group: null, unit: '%', source, nearRatio: NEAR_RATIO.other });
     const currentSource = limits.current?.source ?? '';
+    const { ordersH } = model.excitation;
+    this.#judged = {
+      voltage: judgedOrders(ordersH, limits.voltage),
+      primary: judgedOrders(ordersH, limits.primary),
+      current: judgedOrders(ordersH, limits.current),
+    };
     this.#rows = {
       buses: {
         distortion: head('voltage distortion', limits.voltage.source),
@@ -125,76 +131,67 @@ export class NetworkDuties {
 
   #takeLevel(flow: Flow): void {
     const baseline = this.#baselines[flow.corner.network]!;
-    const place: Place = { levelKvar: flow.levelKvar, corner: flow.corner.corner, orderH: null };
-    for (const [bus, found] of flow.buses.entries()) {
+    // The name of the bus is worth saying only where there are several.
+    const buses = this.#model.buses.length === 1 ? null : this.#model.buses;
+    for (let bus = 0; bus < flow.buses.length; bus++) {
       const without = { distortionPct: baseline.distortionPct[bus]!, voltagePct: baseline.voltagePct[bus]! };
-      this.#takeVoltages(
-        flow,
-        { ...found, without, limits: this.#limits.voltage, rows: this.#rows.buses },
-        this.#at(place, bus),
-      );
+      this.#takeVoltages(flow, flow.buses[bus]!, { without, point: 'voltage', bus: buses?.[bus] });
     }
     if (flow.primary !== null) {
-      const met = {
-        ...flow.primary,
-        without: baseline.primary!,
-        limits: this.#limits.primary,
-        rows: this.#rows.primary,
-      };
-      this.#takeVoltages(flow, met, { ...place, bus: 'primary' });
+      this.#takeVoltages(flow, flow.primary, { without: baseline.primary!, point: 'primary', bus: 'primary' });
     }
-    this.#takeCurrents(flow, baseline, place);
+    this.#takeCurrents(flow, baseline);
   }
 
-  // The name of the bus is worth saying only where there are several.
-  #at(place: Place, bus: number): Place {
-    return this.#model.buses.length === 1 ? place : { ...place, bus: this.#model.buses[bus]! };
-  }
-
-  #takeVoltages({ ordersH }: Flow, met: MetVoltages, place: Place): void {
-    const { voltageV, voltageDistortionPct, without, limits, rows } = met;
-    this.#takeAgainst(rows.distortion, place, {
-      value: voltageDistortionPct,
-      limit: limits.distortionPct,
-      without: without.distortionPct,
-    });
-    for (let i = 0; i < ordersH.length; i++) {
-      const orderH = ordersH[i]!;
-      const limit = limits.orderPct(orderH);
-      if (limit === null) continue;
+  #takeVoltages(
+    flow: Flow,
+    { voltageV, voltageDistortionPct }: BusFlow,
+    {
+      without,
+      point,
+      bus,
+    }: { without: NonNullable<Baseline['primary']>; point: 'voltage' | 'primary'; bus: string | undefined },
+  ): void {
+    const rows = point === 'voltage' ? this.#rows.buses : this.#rows.primary;
+    const { distortionPct } = this.#limits[point];
+    if (distortionPct === null) rows.distortion.takeUnjudged(voltageDistortionPct, placeOf(flow, null, bus));
+    else if (this.#isWorst(rows.distortion, voltageDistortionPct, distortionPct, without.distortionPct)) {
+      rows.distortion.keep(voltageDistortionPct, distortionPct, placeOf(flow, null, bus));
+    }
+    const { places, limitPct } = this.#judged[point];
+    for (let k = 0; k < places.length; k++) {
+      const i = places[k]!;
       const value = this.#voltagePct(voltageV[i]!);
-      this.#takeAgainst(rows.voltage, { ...place, orderH }, { value, limit, without: without.voltagePct[i]! });
+      const limit = limitPct[k]!;
+      if (!this.#isWorst(rows.voltage, value, limit, without.voltagePct[i]!)) continue;
+      rows.voltage.keep(value, limit, placeOf(flow, flow.ordersH[i]!, bus));
     }
   }
 
-  #takeCurrents(flow: Flow, baseline: Baseline, place: Place): void {
+  #takeCurrents(flow: Flow, baseline: Baseline): void {
     const { current } = this.#limits;
     if (current === null || flow.ordersH.length === 0) return;
-    for (let i = 0; i < flow.ordersH.length; i++) {
-      const orderH = flow.ordersH[i]!;
-      const limit = current.orderPct(orderH);
-      if (limit === null) continue;
+    const { places, limitPct } = this.#judged.current;
+    for (let k = 0; k < places.length; k++) {
+      const i = places[k]!;
       const value = this.#sourcePct(flow.sourceA[i]!);
-      this.#takeAgainst(this.#rows.current, { ...place, orderH }, { value, limit, without: baseline.sourcePct[i]! });
+      const limit = limitPct[k]!;
+      if (!this.#isWorst(this.#rows.current, value, limit, baseline.sourcePct[i]!)) continue;
+      this.#rows.current.keep(value, limit, placeOf(flow, flow.ordersH[i]!));
     }
-    this.#takeAgainst(this.#rows.currentDistortion, place, {
-      value: flow.currentDistortionPct,
-      limit: current.totalPct,
-      without: baseline.currentPct,
-    });
+    const { totalPct } = current;
+    const total = flow.currentDistortionPct;
+    const row = this.#rows.currentDistortion;
+    if (totalPct === null) row.takeUnjudged(total, placeOf(flow, null));
+    else if (this.#isWorst(row, total, totalPct, baseline.currentPct)) row.keep(total, totalPct, placeOf(flow, null));
   }
 
-  #takeAgainst(row: DutyRow, place: Place, met: { value: number; limit: number | null; without: number }): void {
-    const { limit } = met;
-    if (limit === null) row.takeUnjudged(met.value, place);
-    else row.take(met.value, limit, place, (ratio) => this.#judge(ratio, { ...met, limit }));
-  }
-
-  #judge(ratio: number, met: { value: number; limit: number; without: number }): Verdict {
+  #isWorst(row: DutyRow, value: number, limit: number, without: number): boolean {
+    const ratio = value / limit;
     const verdict = ratioVerdict(ratio, NEAR_RATIO.other);
-    if (verdict !== 'avoid' || met.value - met.without > BASELINE_SHARE * met.limit) return verdict;
+    if (verdict !== 'avoid' || value - without > BASELINE_SHARE * limit) return row.counts(ratio, verdict);
     this.exceededAlready = true;
-    return 'watch';
+    return row.counts(ratio, 'watch');
   }
 
   #voltagePct(phaseV: number): number {
@@ -212,4 +209,15 @@ export class NetworkDuties {
       .flatMap((row) => row.duty() ?? [])
       .map((duty) => (this.#known || duty.verdict !== 'clear' ? duty : { ...duty, verdict: null }));
   }
+}
+
+function judgedOrders(ordersH: Float64Array, limits: { orderPct(orderH: number): number | null } | null): JudgedOrders {
+  const limitPct = Array.from(ordersH, (orderH) => limits?.orderPct(orderH) ?? null);
+  const places = [...limitPct.keys()].filter((i) => limitPct[i] !== null);
+  return { places: Int32Array.from(places), limitPct: Float64Array.from(places, (i) => limitPct[i]!) };
+}
+
+function placeOf(flow: Flow, orderH: number | null, bus?: string): Place {
+  const place = { levelKvar: flow.levelKvar, corner: flow.corner.corner, orderH };
+  return bus === undefined ? place : { ...place, bus };
 }

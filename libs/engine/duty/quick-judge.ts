@@ -76,13 +76,20 @@ export interface FirmVerdict {
  * @param model the network without the bank
  * @param bank the bank
  * @param basis rules, voltages, supply, loads, reconnection delay
+ * @param closing rows of exact inrush where they are known: distorting loads and background have no part in them
  * @returns verdict and the worst duty
  * @source method-limits
  */
-export function firmVerdict(model: NetworkModel, bank: Bank, basis: JudgeBasis): FirmVerdict {
+export function firmVerdict(
+  model: NetworkModel,
+  bank: Bank,
+  basis: JudgeBasis,
+  closing?: readonly Duty[],
+): FirmVerdict {
   const quick = quickJudge(model, bank, basis);
   const levels = bankLevels(bank, basis.voltages.nominalV);
-  const duties = [...quick.duties, ...closingDuties(model, bank, levels, basis), ...dischargeDuties(bank, basis)];
+  const inrush = closing ?? closingDuties(model, bank, levels, basis);
+  const duties = [...quick.duties, ...inrush, ...dischargeDuties(bank, basis)];
   const worst = duties.reduce<Duty | null>(
     (most, duty) => ((duty.ratio ?? -1) > (most?.ratio ?? -1) ? duty : most),
     null,

@@ -3,7 +3,7 @@ import { ratedA } from '../layout/stage.js';
 import type { Flow } from '../network/bus-flow.js';
 import type { NetworkModel } from '../network/network-model.js';
 import { branchRatio, type StageBranch, stageBranch } from '../network/stage-admittance.js';
-import { type Duty, DutyRow, NEAR_RATIO } from './duty-row.js';
+import { type Duty, DutyRow, NEAR_RATIO, type Place, ratioVerdict } from './duty-row.js';
 import { CAPACITOR_RULES, type CapacitorRules, type RuleSet } from './rules.js';
 
 /** Voltages the duties of a stage are taken at [V]. */
@@ -68,51 +68,57 @@ export class StageDuties {
   /** @param flow the next flow; ignored unless a stage of the group is connected in it */
   take(flow: Flow): void {
     if (flow.connected[this.#index] === 0) return;
-    const state = this.#states[flow.corner.factors]!;
-    const place = { levelKvar: flow.levelKvar, corner: flow.corner.corner, orderH: null };
+    const { highestV, nominalV, fundamentalA, branch } = this.#states[flow.corner.factors]!;
     const currents = flow.stageA[this.#index]!;
-    let voltageSquare = state.highestV ** 2;
-    let voltageSum = state.highestV;
-    let currentSquare = state.fundamentalA ** 2;
-    let powerVa = state.highestV * state.fundamentalA;
+    const { ordersH } = flow;
+    let voltageSquare = highestV * highestV;
+    let voltageSum = highestV;
+    let currentSquare = fundamentalA * fundamentalA;
+    let powerVa = highestV * fundamentalA;
     for (let i = 0; i < currents.length; i++) {
-      const harmonicV = (SQRT3 * currents[i]! * state.branch.capacitiveOhm) / flow.ordersH[i]!;
-      voltageSquare += harmonicV ** 2;
+      const harmonicV = (SQRT3 * currents[i]! * branch.capacitiveOhm) / ordersH[i]!;
+      voltageSquare += harmonicV * harmonicV;
       voltageSum += harmonicV;
-      currentSquare += currents[i]! ** 2;
+      currentSquare += currents[i]! * currents[i]!;
       powerVa += harmonicV * currents[i]!;
     }
-    this.#judge(flow, place, {
-      nominalV: state.nominalV,
-      rmsV: Math.sqrt(voltageSquare),
-      crestV: Math.SQRT2 * voltageSum,
-      rmsA: Math.sqrt(currentSquare),
-      powerKvar: (SQRT3 * powerVa) / 1000,
-    });
+    const { ratedV } = this.#group;
+    const { continuousVoltageRatio, highestVoltageRatio, crestVoltageRatio } = this.#rules;
+    if (continuousVoltageRatio !== null) {
+      this.#takeInto(this.#rows.continuous, flow, nominalV, continuousVoltageRatio * ratedV);
+    }
+    this.#takeInto(this.#rows.highest, flow, Math.sqrt(voltageSquare), highestVoltageRatio * ratedV);
+    if (crestVoltageRatio !== null) {
+      this.#takeInto(this.#rows.crest, flow, Math.SQRT2 * voltageSum, crestVoltageRatio * Math.SQRT2 * ratedV);
+    }
+    this.#takeCurrents(flow, Math.sqrt(currentSquare), (SQRT3 * powerVa) / 1000);
   }
 
-  #judge(flow: Flow, place: Parameters<DutyRow['take']>[2], met: Record<string, number>): void {
+  #takeCurrents(flow: Flow, rmsA: number, powerKvar: number): void {
     const rules = this.#rules;
-    const { ratedV, ratedKvar, reactorPct, reactorMaxA } = this.#group;
-    if (rules.continuousVoltageRatio !== null) {
-      this.#rows.continuous.take(met.nominalV!, rules.continuousVoltageRatio * ratedV, place);
-    }
-    this.#rows.highest.take(met.rmsV!, rules.highestVoltageRatio * ratedV, place);
-    if (rules.crestVoltageRatio !== null) {
-      this.#rows.crest.take(met.crestV!, rules.crestVoltageRatio * Math.SQRT2 * ratedV, place);
-    }
+    const { ratedKvar, reactorPct, reactorMaxA } = this.#group;
     const growth = rules.currentGrowsWithCapacitance ? flow.corner.corner.capacitanceFactor : 1;
-    this.#rows.current.take(met.rmsA!, rules.currentRatio * ratedA(this.#group) * growth, place);
+    this.#takeInto(this.#rows.current, flow, rmsA, rules.currentRatio * ratedA(this.#group) * growth);
     if (rules.reactivePowerRatio !== null) {
-      this.#rows.power.take(met.powerKvar!, rules.reactivePowerRatio * ratedKvar, place);
+      this.#takeInto(this.#rows.power, flow, powerKvar, rules.reactivePowerRatio * ratedKvar);
     }
     if (reactorPct === 0) return;
-    if (reactorMaxA === null) this.#rows.reactor.takeUnjudged(met.rmsA!, place);
-    else this.#rows.reactor.take(met.rmsA!, reactorMaxA, place);
+    const { reactor } = this.#rows;
+    if (reactorMaxA !== null) this.#takeInto(reactor, flow, rmsA, reactorMaxA);
+    else if (reactor.isMost(rmsA)) reactor.takeUnjudged(rmsA, placeOf(flow));
+  }
+
+  #takeInto(row: DutyRow, flow: Flow, value: number, limit: number): void {
+    const ratio = value / limit;
+    if (row.counts(ratio, ratioVerdict(ratio, row.head.nearRatio))) row.keep(value, limit, placeOf(flow));
   }
 
   /** @returns the rows that were taken */
   duties(): Duty[] {
     return Object.values(this.#rows).flatMap((row) => row.duty() ?? []);
   }
+}
+
+function placeOf(flow: Flow): Place {
+  return { levelKvar: flow.levelKvar, corner: flow.corner.corner, orderH: null };
 }

@@ -75,12 +75,23 @@ function rangedClause(ground: RangeGround, clause: Clause, k: number): RangedCla
  * @source derived: rounding and tax never fall with a line
  */
 export function billRange(ranged: RangedTariff, box: MeterBox): Range[] {
+  return billRangeOf(ranged, (m) => ranged.boxes.read(m, box));
+}
+
+/**
+ * The same where somebody else fills the boxes.
+ * @param ranged the tariff, ready for bounds
+ * @param read fills the tariff's boxes for a month
+ * @returns one range a month, tax included
+ * @source derived
+ */
+export function billRangeOf(ranged: RangedTariff, read: (m: number) => void): Range[] {
   const { prepared } = ranged;
   const { months } = prepared.calendar;
   const carriedLow = new Float64Array(ranged.carriedRows * months.length);
   const carriedHigh = new Float64Array(ranged.carriedRows * months.length);
   return months.map((month, m) => {
-    ranged.boxes.read(m, box);
+    read(m);
     const run: RangeRun = { m, month, months, carriedLow, carriedHigh, lines: [], billSoFar: exactly(0) };
     return monthRange(ranged, run);
   });

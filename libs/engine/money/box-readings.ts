@@ -10,8 +10,11 @@ import type { TariffCalendar } from './tariff-calendar.js';
 
 /** Energies of a selection between the ends of a box, period by period. */
 export class EnergyBox {
-  readonly #low: EnergyReading;
-  readonly #high: EnergyReading;
+  readonly selection: Selection;
+  /** its only period is the month */
+  readonly byMonth: boolean;
+  readonly low: EnergyReading;
+  readonly high: EnergyReading;
 
   /**
    * @param selection the intervals
@@ -19,8 +22,10 @@ export class EnergyBox {
    * @param hours length of an interval [h]
    */
   constructor(selection: Selection, grouping: Grouping | null, hours: number) {
-    this.#low = new EnergyReading(selection, grouping, hours);
-    this.#high = new EnergyReading(selection, grouping, hours);
+    this.selection = selection;
+    this.byMonth = grouping === null;
+    this.low = new EnergyReading(selection, grouping, hours);
+    this.high = new EnergyReading(selection, grouping, hours);
   }
 
   /**
@@ -29,13 +34,13 @@ export class EnergyBox {
    * @param box the meter's ends
    */
   read(m: number, box: MeterBox): void {
-    this.#low.read(m, box.low);
-    this.#high.read(m, box.high);
+    this.low.read(m, box.low);
+    this.high.read(m, box.high);
   }
 
   /** @returns periods of the month read */
   get periods(): number {
-    return this.#low.periods;
+    return this.low.periods;
   }
 
   /**
@@ -43,7 +48,7 @@ export class EnergyBox {
    * @returns E_p [kWh]
    */
   activeKwh(period: number): Range {
-    return { lo: this.#low.activeKwh[period]!, hi: this.#high.activeKwh[period]! };
+    return { lo: this.low.activeKwh[period]!, hi: this.high.activeKwh[period]! };
   }
 
   /**
@@ -52,7 +57,7 @@ export class EnergyBox {
    * @returns E_q [kvarh]
    */
   reactiveKvarh(basis: ReactiveBasis, period: number): Range {
-    const [low, high] = [this.#low, this.#high];
+    const { low, high } = this;
     if (basis === 'net') {
       return {
         lo: Math.max(low.laggingKvarh[period]! - high.leadingKvarh[period]!, 0),
@@ -113,6 +118,12 @@ export class BoxReadings {
     const made = new DemandBox({ selection, blocks, periods: within, basis });
     this.#demands.set(key, made);
     return made;
+  }
+
+  /** @returns the boxes where each is an energy of whole months, null where a tariff asks for more */
+  get wholeMonths(): EnergyBox[] | null {
+    const boxes = [...this.#energies.values()];
+    return this.#demands.size === 0 && boxes.every(({ byMonth }) => byMonth) ? boxes : null;
   }
 
   #periods(selection: Selection, per: Period): Grouping | null {

@@ -53,6 +53,21 @@ export class EnergyReading {
     }
   }
 
+  /**
+   * Takes one month's energies from somebody who has added them up already; for whole months alone.
+   * @param m index of the month
+   * @param activeKwh E_p [kWh]
+   * @param laggingKvarh [kvarh]
+   * @param leadingKvarh [kvarh]
+   */
+  take(m: number, activeKwh: number, laggingKvarh: number, leadingKvarh: number): void {
+    this.intervals = this.#selection.monthFrom[m + 1]! - this.#selection.monthFrom[m]!;
+    this.periods = 1;
+    this.activeKwh[0] = activeKwh;
+    this.laggingKvarh[0] = laggingKvarh;
+    this.leadingKvarh[0] = leadingKvarh;
+  }
+
   #readMonth(from: number, end: number, { activeKw, laggingKvar, leadingKvar }: MeterColumns): void {
     const { intervals } = this.#selection;
     let active = 0;

@@ -13,6 +13,8 @@ export interface PresentWeights {
   replacementIn: Float64Array;
   /** least of those up to each month: a replacement no later than a month costs at least this */
   leastReplacementBy: Float64Array;
+  /** what a replacement each month but the last weighs in all, at the least, and one of them */
+  everyMonth: { all: number; once: number };
 }
 
 /**
@@ -47,7 +49,16 @@ export function presentWeights(months: readonly TariffMonth[], finance: SettledF
     maintenancePerYear: costs / 12,
     replacementIn,
     leastReplacementBy,
+    everyMonth: everyMonth(replacementIn.subarray(1, last)),
   };
+}
+
+// While the weights never rise each weighs no less than any after it; where they do, each weighs no less than the least.
+function everyMonth(weights: Float64Array): PresentWeights['everyMonth'] {
+  const falls = weights.every((weight, m) => m === 0 || weight <= weights[m - 1]!);
+  if (falls) return { all: weights.reduce((sum, weight) => sum + weight, 0), once: weights[0] ?? 0 };
+  const least = Math.min(...weights);
+  return { all: least * weights.length, once: least };
 }
 
 function savingWeights(months: readonly TariffMonth[], byName: Float64Array): Float64Array {

@@ -57,15 +57,17 @@ export function networkColumns(model: NetworkModel, network: number, ordersH: Fl
  */
 export function bankColumn(stages: readonly ComplexColumn[], vector: ArrayLike<number>, length: number): ComplexColumn {
   const out: ComplexColumn = { re: new Float64Array(length), im: new Float64Array(length) };
-  for (const [g, { re, im }] of stages.entries()) {
-    const count = vector[g]!;
-    if (count === 0) continue;
-    for (let i = 0; i < length; i++) {
-      out.re[i]! += count * re[i]!;
-      out.im[i]! += count * im[i]!;
-    }
-  }
+  for (let g = 0; g < stages.length; g++) addInto(out, stages[g]!, vector[g]!);
   return out;
+}
+
+// A function of its own, so that a long column is not begun in code that is still slow.
+function addInto(out: ComplexColumn, { re, im }: ComplexColumn, count: number): void {
+  if (count === 0) return;
+  for (let i = 0; i < out.re.length; i++) {
+    out.re[i]! += count * re[i]!;
+    out.im[i]! += count * im[i]!;
+  }
 }
 
 /**

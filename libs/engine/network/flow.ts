@@ -18,6 +18,8 @@ export interface BankModel {
   states: BankState[][];
   /** [factors][group] */
   stages: ComplexColumn[][];
+  /** |y| of the same [S] */
+  stageSiemens: Float64Array[][];
 }
 
 /**
@@ -31,13 +33,15 @@ export interface BankModel {
 export function bankModel(model: NetworkModel, bank: Bank, levels: Level[]): BankModel {
   const exponent = model.corners.networks[0]!.path.resistanceExponent;
   const kinds = stageKinds(bank);
+  const stages = model.corners.factors.map((factors) =>
+    bank.groups.map((group) => stageAdmittance(stageBranch(group, factors, exponent), model.excitation.ordersH)),
+  );
   return {
     bank,
     levels,
     states: levels.map(({ vectors }) => bankStates(kinds, vectors)),
-    stages: model.corners.factors.map((factors) =>
-      bank.groups.map((group) => stageAdmittance(stageBranch(group, factors, exponent), model.excitation.ordersH)),
-    ),
+    stages,
+    stageSiemens: stages.map((groups) => groups.map(({ re, im }) => re.map((g, i) => magnitude(g, im[i]!)))),
   };
 }
 
@@ -81,7 +85,7 @@ export function eachFlow(model: NetworkModel, bank: BankModel, visit: (flow: Flo
         flow.vector = vector;
         flow.connected = connected;
         flow.corner = corner;
-        if (model.nodal === null) flowInto(model, bank.stages[corner.factors]!, flow);
+        if (model.nodal === null) flowInto(model, bank, flow);
         else nodalFlowInto(model, bank.stages[corner.factors]!, flow);
         if (flow.primary !== null) finishPrimary(model, bank.stages[corner.factors]!, flow);
         visit(flow);
@@ -98,38 +102,38 @@ function finishPrimary(model: NetworkModel, stages: readonly ComplexColumn[], fl
   primary.voltageDistortionPct = (100 * Math.sqrt(square)) / (model.nominalV / Math.sqrt(3));
 }
 
-function flowInto(model: NetworkModel, stages: readonly ComplexColumn[], flow: Flow): void {
+function flowInto(model: NetworkModel, bank: BankModel, flow: Flow): void {
   const { excitation, nominalV, loadA } = model;
-  const table = model.atOrders[flow.corner.network]!;
-  const drive = model.drives[flow.corner.network]!;
+  const { ordersH, injectedA, exponent } = excitation;
+  const { bus, source } = model.atOrders[flow.corner.network]!;
+  const { backgroundA, equivalentA, sourceOhm } = model.drives[flow.corner.network]!;
+  const stages = bank.stages[flow.corner.factors]!;
+  const stageSiemens = bank.stageSiemens[flow.corner.factors]!;
+  const { vector, voltageV, sourceA, bankA, stageA } = flow;
   let voltageSquare = 0;
   let currentSquare = 0;
-  for (let i = 0; i < excitation.ordersH.length; i++) {
+  for (let i = 0; i < ordersH.length; i++) {
     let bankRe = 0;
     let bankIm = 0;
     for (let g = 0; g < stages.length; g++) {
-      bankRe += flow.vector[g]! * stages[g]!.re[i]!;
-      bankIm += flow.vector[g]! * stages[g]!.im[i]!;
+      bankRe += vector[g]! * stages[g]!.re[i]!;
+      bankIm += vector[g]! * stages[g]!.im[i]!;
     }
-    const yRe = table.bus.re[i]! + bankRe;
-    const yIm = table.bus.im[i]! + bankIm;
+    const yRe = bus.re[i]! + bankRe;
+    const yIm = bus.im[i]! + bankIm;
     const zMagnitude = 1 / Math.max(LEAST_SIEMENS, magnitude(yRe, yIm));
-    const sRe = table.source.re[i]!;
-    const sIm = table.source.im[i]!;
+    const sRe = source.re[i]!;
+    const sIm = source.im[i]!;
     // E·(1 − Z/Z_s)/Z_s = (Z/Z_s)·(E/Z_s)·(Z_s·Y − 1): the share Z/Z_s stands before both currents of the source.
     const reaction = magnitude(sRe * yRe - sIm * yIm - 1, sRe * yIm + sIm * yRe);
-    const background = drive.backgroundA[i]! * reaction;
-    const v = zMagnitude * drive.equivalentA[i]!;
-    const source =
-      (zMagnitude / drive.sourceOhm[i]!) * combine(excitation.injectedA[i]!, background, excitation.exponent[i]!);
-    flow.voltageV[i] = v;
-    flow.sourceA[i] = source;
-    flow.bankA[i] = v * magnitude(bankRe, bankIm);
-    for (let g = 0; g < stages.length; g++) {
-      flow.stageA[g]![i] = v * magnitude(stages[g]!.re[i]!, stages[g]!.im[i]!);
-    }
+    const v = zMagnitude * equivalentA[i]!;
+    const a = (zMagnitude / sourceOhm[i]!) * combine(injectedA[i]!, backgroundA[i]! * reaction, exponent[i]!);
+    voltageV[i] = v;
+    sourceA[i] = a;
+    bankA[i] = v * magnitude(bankRe, bankIm);
+    for (let g = 0; g < stages.length; g++) stageA[g]![i] = v * stageSiemens[g]![i]!;
     voltageSquare += v * v;
-    currentSquare += source * source;
+    currentSquare += a * a;
   }
   flow.voltageDistortionPct = (100 * Math.sqrt(voltageSquare)) / (nominalV / Math.sqrt(3));
   flow.buses[0]!.voltageDistortionPct = flow.voltageDistortionPct;

@@ -51,6 +51,7 @@ export class PeakFinder {
   readonly #square: Float64Array;
   readonly #stages: (ComplexColumn[] | undefined)[] = [];
   readonly #buses: (BusColumns[] | undefined)[] = [];
+  #last: { shares: Float64Array; factors: number; column: ComplexColumn } | null = null;
 
   /**
    * @param model the network without the bank
@@ -62,9 +63,7 @@ export class PeakFinder {
     this.#kinds = stageKinds(bank);
     const all = peakGrid([...this.#tunedOrders(), ...networkTunedOrders(model)]);
     // A step more on either side, so that a peak at the edge still has a sample beyond it.
-    const reach = near === undefined ? Number.POSITIVE_INFINITY : near + 2 * GRID_STEP_H;
-    const present = model.excitation.ordersH;
-    this.#ordersH = near === undefined ? all : all.filter((h) => present.some((order) => Math.abs(h - order) <= reach));
+    this.#ordersH = near === undefined ? all : nearOrders(all, model.excitation.ordersH, near + 2 * GRID_STEP_H);
     this.#square = new Float64Array(this.#ordersH.length);
   }
 
@@ -86,10 +85,9 @@ export class PeakFinder {
     const columns = this.#columns(corner.network, bus);
     const square = this.#square;
     const shares = kindShares(this.#kinds, vector);
-    seenSquareInto(columns, bankColumn(this.#stagesAt(corner.factors), shares, square.length), square);
+    seenSquareInto(columns, this.#bankAt(shares, corner.factors), square);
     const peaks: Peak[] = [];
-    for (let i = 1; i < square.length - 1; i++) {
-      if (!(square[i]! < square[i - 1]! && square[i]! <= square[i + 1]!)) continue;
+    for (let i = nextMinimum(square, 1); i < square.length - 1; i = nextMinimum(square, i + 1)) {
       const lowH = this.#ordersH[i - 1]!;
       const highH = this.#ordersH[i + 1]!;
       if (!worthRefining(lowH, highH)) continue;
@@ -134,6 +132,15 @@ export class PeakFinder {
     return found.sort((a, b) => a.orderH - b.orderH);
   }
 
+  // Corners of one pair of factors follow each other, and a bank is the same in all of them.
+  #bankAt(shares: Float64Array, factors: number): ComplexColumn {
+    const last = this.#last;
+    if (last?.factors === factors && last.shares.every((share, kind) => share === shares[kind])) return last.column;
+    const column = bankColumn(this.#stagesAt(factors), shares, this.#square.length);
+    this.#last = { shares, factors, column };
+    return column;
+  }
+
   #branches(factors: number): StageBranch[] {
     const exponent = this.#model.corners.networks[0]!.path.resistanceExponent;
     const factor = this.#model.corners.factors[factors]!;
@@ -165,6 +172,23 @@ export class PeakFinder {
     seenSquareInto(busColumns(this.#model, at.corner.network, at.bus, ordersH), bankColumn(stages, shares, 1), out);
     return out[0]!;
   }
+}
+
+// The place of the next sample that is less than the one before and no more than the one after; the end where there is
+// none. A loop of its own, kept small.
+function nextMinimum(square: Float64Array, from: number): number {
+  let i = from;
+  while (i < square.length - 1 && !(square[i]! < square[i - 1]! && square[i]! <= square[i + 1]!)) i++;
+  return i;
+}
+
+// Those of ascending orders that lie within reach of an order present.
+function nearOrders(ordersH: Float64Array, present: Float64Array, reachH: number): Float64Array {
+  let at = 0;
+  return ordersH.filter((h) => {
+    while (at < present.length - 1 && h - present[at]! > reachH) at++;
+    return at < present.length && Math.abs(h - present[at]!) <= reachH;
+  });
 }
 
 function isShoulder(ordersH: Float64Array, square: Float64Array, i: number): boolean {
@@ -205,8 +229,17 @@ export function peakGrid(tunedH: readonly number[]): Float64Array {
       tuned + step,
     ]),
   );
-  const ascending = Float64Array.of(...EVEN_GRID_H, ...approaching)
-    .filter((h) => h >= 1 && h <= HIGHEST_ORDER_H)
-    .sort();
+  const ascending = mergedWithGrid(Float64Array.from(approaching.filter((h) => h >= 1 && h <= HIGHEST_ORDER_H)).sort());
   return ascending.filter((h, i) => i === 0 || h - ascending[i - 1]! > ONE_POINT_H);
+}
+
+function mergedWithGrid(more: Float64Array): Float64Array {
+  const all = new Float64Array(EVEN_GRID_H.length + more.length);
+  let a = 0;
+  let b = 0;
+  for (let i = 0; i < all.length; i++) {
+    const takesGrid = b === more.length || (a < EVEN_GRID_H.length && EVEN_GRID_H[a]! <= more[b]!);
+    all[i] = takesGrid ? EVEN_GRID_H[a++]! : more[b++]!;
+  }
+  return all;
 }

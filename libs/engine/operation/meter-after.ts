@@ -50,25 +50,28 @@ export function meterAfterInto(
   end: number,
 ): void {
   const { record, load, connectedKvar } = given;
+  const { activeKw, laggingKvar, leadingKvar } = after;
+  const passage = load.metering.at === 'primary' ? load.metering.passage : null;
+  const { laggingKvar: laggingBefore, leadingKvar: leadingBefore } = record;
   for (let i = from; i < end; i++) {
-    const lagging = record.laggingKvar[i]!;
-    const leading = record.leadingKvar[i]!;
-    let activeKw = record.activeKw[i]!;
+    const lagging = laggingBefore[i]!;
+    const leading = leadingBefore[i]!;
+    let kw = record.activeKw[i]!;
     let netKvar = load.reactiveKvar[i]! - connectedKvar[i]!;
-    if (load.metering.at === 'primary') {
-      const primary = primaryFromBus(load.metering.passage, load.activeKw[i]!, netKvar);
+    if (passage !== null) {
+      const primary = primaryFromBus(passage, load.activeKw[i]!, netKvar);
       if (primary === null) throw cannotCarry(record.beginS[i]!, load.activeKw[i]!, netKvar);
-      activeKw = primary.activeKw;
+      kw = primary.activeKw;
       netKvar = primary.reactiveKvar;
     }
     const fall = lagging - leading - netKvar;
-    after.activeKw[i] = activeKw;
+    activeKw[i] = kw;
     if (fall >= 0) {
-      after.laggingKvar[i] = Math.max(lagging - fall, 0);
-      after.leadingKvar[i] = leading + Math.max(fall - lagging, 0);
+      laggingKvar[i] = Math.max(lagging - fall, 0);
+      leadingKvar[i] = leading + Math.max(fall - lagging, 0);
     } else {
-      after.leadingKvar[i] = Math.max(leading + fall, 0);
-      after.laggingKvar[i] = lagging + Math.max(-fall - leading, 0);
+      leadingKvar[i] = Math.max(leading + fall, 0);
+      laggingKvar[i] = lagging + Math.max(-fall - leading, 0);
     }
   }
 }

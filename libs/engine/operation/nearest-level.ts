@@ -1,4 +1,5 @@
 import type { Decision } from './decide.js';
+import { FreeLevels } from './free-levels.js';
 import type { SwitchedBank } from './switched-bank.js';
 
 /** Comparisons of candidates carry this share of the smallest stage. */
@@ -20,6 +21,12 @@ export class NearestLevel {
   readonly #counts: Int32Array;
   /** classes in the order they are walked: the one with most stages last */
   readonly #order: Int32Array;
+  /** least and most the classes from a place of the order on can give, switchings not counted [kvar] */
+  readonly #leastFrom: Float64Array;
+  readonly #mostFrom: Float64Array;
+  readonly #bank: SwitchedBank;
+  /** absent until it is asked for */
+  #levels: FreeLevels | null | undefined;
   #choosing = false;
   #leastOff = 0;
   #fewest = 0;
@@ -30,12 +37,15 @@ export class NearestLevel {
    * @param decision state of the interval, read and filled at every choice
    */
   constructor(bank: SwitchedBank, decision: Decision) {
+    this.#bank = bank;
     this.#decision = decision;
     this.#nominalKvar = Float64Array.from(bank.classes, ({ kvar }) => kvar);
     this.#kvar = new Float64Array(bank.classes.length);
     this.#counts = new Int32Array(bank.classes.length);
     const stages = bank.classes.map((sizeClass) => sizeClass.stages.length);
     this.#order = Int32Array.from(stages.keys()).sort((a, b) => stages[a]! - stages[b]! || a - b);
+    this.#leastFrom = new Float64Array(stages.length + 1);
+    this.#mostFrom = new Float64Array(stages.length + 1);
     this.#fixedKvar = bank.fixedKvar;
     this.#tolerance = COMPARISON_SHARE * bank.smallestKvar;
   }
@@ -52,7 +62,15 @@ export class NearestLevel {
       chosen[0] = this.#nearestOfOneSize();
       return;
     }
+    if (voltageScale === 1 && this.#allAreFree()) {
+      if (this.#levels === undefined) this.#levels = FreeLevels.of(this.#bank, this.#tolerance);
+      if (this.#levels !== null) {
+        this.#levels.chooseInto(chosen, this.#decision.wantedKvar - this.#fixedKvar, connected);
+        return;
+      }
+    }
     for (let c = 0; c < this.#kvar.length; c++) this.#kvar[c] = this.#nominalKvar[c]! * voltageScale;
+    this.#reachInto();
     const fixedKvar = this.#fixedKvar * voltageScale;
     // The first walk finds the least distance; the second takes among those as near.
     this.#choosing = false;
@@ -62,6 +80,18 @@ export class NearestLevel {
     this.#fewest = Number.MAX_SAFE_INTEGER;
     this.#lowestKvar = Number.POSITIVE_INFINITY;
     this.#walk(0, fixedKvar, 0);
+  }
+
+  // Whatever is out may be connected, and as much be switched as there is.
+  #allAreFree(): boolean {
+    const { connected, free, mostSwitchings } = this.#decision;
+    let switched = 0;
+    for (let c = 0; c < connected.length; c++) {
+      const stages = this.#bank.classes[c]!.stages.length;
+      if (connected[c]! + free[c]! !== stages) return false;
+      switched += stages;
+    }
+    return mostSwitchings >= switched;
   }
 
   // The nearest count lies beside wanted/kvar, held within reach; of two equally near the one with fewer switchings.
@@ -81,10 +111,27 @@ export class NearestLevel {
     return Math.abs(below + 1 - present) < Math.abs(below - present) ? below + 1 : below;
   }
 
+  #reachInto(): void {
+    const { connected, free, mostSwitchings } = this.#decision;
+    for (let place = this.#order.length - 1; place >= 0; place--) {
+      const c = this.#order[place]!;
+      const low = Math.max(0, connected[c]! - mostSwitchings);
+      const high = connected[c]! + Math.min(free[c]!, mostSwitchings);
+      this.#leastFrom[place] = this.#leastFrom[place + 1]! + low * this.#kvar[c]!;
+      this.#mostFrom[place] = this.#mostFrom[place + 1]! + high * this.#kvar[c]!;
+    }
+  }
+
   // Every reachable count of all classes but the last of the order; of that one only the two counts beside what is
-  // still wanted can be nearest.
+  // still wanted can be nearest. Where even all or none of what is left lies further off than the nearest so far, by more
+  // than sums of the same stages differ, nothing is looked at.
   #walk(place: number, levelKvar: number, switchings: number): void {
     const { connected, free, mostSwitchings, wantedKvar } = this.#decision;
+    const beyond = Math.max(
+      wantedKvar - levelKvar - this.#mostFrom[place]!,
+      levelKvar + this.#leastFrom[place]! - wantedKvar,
+    );
+    if (beyond > this.#leastOff + 2 * this.#tolerance) return;
     const c = this.#order[place]!;
     const present = connected[c]!;
     const kvar = this.#kvar[c]!;

@@ -1,5 +1,5 @@
 import type { Level } from '../layout/levels.js';
-import { Total } from '../quantity/compensated-sum.js';
+import { compensatedSum } from '../quantity/compensated-sum.js';
 import { energyPowerFactor, tanFromPowerFactor } from '../quantity/power-factor.js';
 import type { MonthIndex } from '../record/zone-table.js';
 import type { BusLoad } from '../requirement/bus-load.js';
@@ -69,24 +69,30 @@ const TARGET_WIDTH_KVAR = 1e-6;
  * @source method-energy
  */
 export function operationMonths(meter: MeterAfter, months: MonthIndex, hours: number): OperationMonth[] {
-  const totals = months.names.map(() => ({ active: new Total(), lagging: new Total(), leading: new Total() }));
-  for (let i = 0; i < meter.activeKw.length; i++) {
-    const total = totals[months.ofInterval[i]!]!;
-    total.active.add(Math.max(meter.activeKw[i]!, 0));
-    total.lagging.add(meter.laggingKvar[i]!);
-    total.leading.add(meter.leadingKvar[i]!);
-  }
-  return totals.map(({ active, lagging, leading }, m) => {
-    const activeKwh = active.value * hours;
-    const laggingKvarh = lagging.value * hours;
-    return {
-      month: months.names[m]!,
-      powerFactorLagging: energyPowerFactor(activeKwh, laggingKvarh),
-      activeKwh,
-      laggingKvarh,
-      leadingKvarh: leading.value * hours,
-    };
-  });
+  return months.names.map((_, m) => operationMonth(meter, months, m, hours));
+}
+
+/**
+ * Energies of one month at the meter after the bank.
+ * @param meter columns at the meter [kW, kvar], length n; only the month's intervals are read
+ * @param months calendar months of the intervals
+ * @param m index of the month
+ * @param hours length of an interval [h]
+ * @returns the month
+ * @source method-energy
+ */
+export function operationMonth(meter: MeterAfter, months: MonthIndex, m: number, hours: number): OperationMonth {
+  const from = months.starts[m]!;
+  const end = months.starts[m + 1]!;
+  const activeKwh = compensatedSum(meter.activeKw, from, end, 0) * hours;
+  const laggingKvarh = compensatedSum(meter.laggingKvar, from, end) * hours;
+  return {
+    month: months.names[m]!,
+    powerFactorLagging: energyPowerFactor(activeKwh, laggingKvarh),
+    activeKwh,
+    laggingKvarh,
+    leadingKvarh: compensatedSum(meter.leadingKvar, from, end) * hours,
+  };
 }
 
 /**
@@ -145,10 +151,13 @@ export function summarizeOperation(
 
 function shortfallColumn(meter: MeterAfter, target: Target): Float64Array {
   const tan = tanFromPowerFactor(target.powerFactor);
-  return Float64Array.from(meter.activeKw, (kw, i) => {
-    const net = meter.laggingKvar[i]! - meter.leadingKvar[i]!;
-    return Math.max(0, net - targetKw(kw, target.onExport) * tan);
-  });
+  const { activeKw, laggingKvar, leadingKvar } = meter;
+  const shortfallKvar = new Float64Array(activeKw.length);
+  for (let i = 0; i < shortfallKvar.length; i++) {
+    const net = laggingKvar[i]! - leadingKvar[i]!;
+    shortfallKvar[i] = Math.max(0, net - targetKw(activeKw[i]!, target.onExport) * tan);
+  }
+  return shortfallKvar;
 }
 
 function worstIntervals(simulated: Simulated, shortfallKvar: Float64Array): WorstInterval[] {

@@ -190,6 +190,7 @@ class SwitchState {
     decision.wantedKvar = wantedKvar;
     decision.voltageScale = scale;
     this.#countFree(beginS);
+    if (!this.#canFollow(wantedKvar - this.levelKvar * scale)) return this.levelKvar;
     if (this.#control.mode === 'nearestLevel') this.#nearest.choose();
     else oneByOneInto(this.#bank, decision);
     for (let c = 0; c < decision.chosen.length; c++) {
@@ -199,6 +200,15 @@ class SwitchState {
       decision.connected[c] = decision.chosen[c]!;
     }
     return this.#settleLevel();
+  }
+
+  // More is wanted and nothing is free, or less and nothing is in: the present level is the nearest there is. So it is
+  // whenever a bank is too small for the load, and through many nights.
+  #canFollow(d: number): boolean {
+    const { connected, free } = this.#decision;
+    const left = d > 0 ? free : connected;
+    for (let c = 0; c < left.length; c++) if (left[c]! > 0) return true;
+    return false;
   }
 
   get on(): Uint8Array {

@@ -4,6 +4,7 @@ import type { ControlReach } from '../operation/control-reach.js';
 import { type MeterAfter, meterAfterInto } from '../operation/meter-after.js';
 import { energyPowerFactor } from '../quantity/power-factor.js';
 import { primaryFromBus, type TransformerPassage } from '../supply/transformer-passage.js';
+import { leastMoves } from './least-moves.js';
 import type { Study } from './study.js';
 
 /** What is known of every bank of about one size under one set point, before any is simulated; one entry a month. */
@@ -12,6 +13,8 @@ export interface BoundCell {
   leastBill: Float64Array;
   /** no fewer kvarh are connected [kvarh] */
   leastKvarh: Float64Array;
+  /** rises and falls of the connected kvar, none of them smaller [kvar] */
+  leastMovesKvar: number[][];
   /** no bank's lowest monthly power factor is higher; 1 where no month has energy */
   mostLowestFactor: number;
 }
@@ -92,7 +95,7 @@ export class CellBounds {
       this.#activeInto(load.metering.passage);
     }
     const leastBill = Float64Array.from(billRange(this.#ranged, this.#box), ({ lo }) => lo);
-    return { leastBill, ...this.#monthSums() };
+    return { leastBill, ...this.#monthSums(size) };
   }
 
   #connectedInto({ mostKvar, leastKvar, wantedKvar, reach }: CellSize): void {
@@ -145,12 +148,14 @@ export class CellBounds {
   }
 
   // kvarh that are connected at the least; the least lagging beside the most active energy.
-  #monthSums(): { leastKvarh: Float64Array; mostLowestFactor: number } {
+  #monthSums(size: CellSize): Omit<BoundCell, 'leastBill'> {
     const { months } = this.#ranged.prepared.calendar;
     const { activeKw } = this.#box.high;
     const { laggingKvar } = this.#box.low;
     const hours = this.#study.record.intervalS / 3600;
     const leastKvarh = new Float64Array(months.length);
+    const leastMovesKvar: number[][] = [];
+    const isHeld = size.wantedKvar !== null && Number.isFinite(size.reach.belowKvar);
     let mostLowestFactor = 1;
     for (const [m, { from, end }] of months.entries()) {
       let kvar = 0;
@@ -162,8 +167,9 @@ export class CellBounds {
         lagging += laggingKvar[i]!;
       }
       leastKvarh[m] = kvar * hours;
+      leastMovesKvar[m] = isHeld ? leastMoves(this.#leastConnectedKvar, this.#mostConnectedKvar, from, end) : [];
       mostLowestFactor = Math.min(mostLowestFactor, energyPowerFactor(active, lagging) ?? 1);
     }
-    return { leastKvarh, mostLowestFactor };
+    return { leastKvarh, leastMovesKvar, mostLowestFactor };
   }
 }

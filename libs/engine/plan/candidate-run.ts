@@ -3,30 +3,12 @@ import { billMonth, newCarried } from '../money/bill.js';
 import type { PreparedTariff } from '../money/prepare-tariff.js';
 import type { Control } from '../operation/control.js';
 import type { ControllerView } from '../operation/controller-view.js';
-import { type MeterAfter, meterAfterInto } from '../operation/meter-after.js';
+import { meterAfterInto } from '../operation/meter-after.js';
 import { Simulation } from '../operation/simulate.js';
 import { switchedBank } from '../operation/switched-bank.js';
 import { energyPowerFactor } from '../quantity/power-factor.js';
+import type { RunColumns } from './run-columns.js';
 import type { Study } from './study.js';
-
-/** Columns that every run writes its month into before it is priced; length n each. */
-export interface RunColumns {
-  connectedKvar: Float64Array;
-  meter: MeterAfter;
-}
-
-/**
- * Columns for runs that take turns.
- * @param n intervals of the record
- * @returns columns
- */
-export function runColumns(n: number): RunColumns {
-  const column = (): Float64Array => new Float64Array(n);
-  return {
-    connectedKvar: column(),
-    meter: { activeKw: column(), laggingKvar: column(), leadingKvar: column() },
-  };
-}
 
 /** What a run shares with all others. */
 export interface RunGround {

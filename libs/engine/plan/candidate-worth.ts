@@ -7,6 +7,8 @@ import { type Life, lossWPerKvar, replacements, runningCosts, switchLife } from 
 import { savingByMonth } from '../money/saving.js';
 import type { TariffMonth } from '../money/tariff-calendar.js';
 import type { CandidateRun } from './candidate-run.js';
+import { LeastSwitchings } from './least-moves.js';
+import { type LeastWear, leastWear } from './least-wear.js';
 import { usageOf } from './price-bank.js';
 import type { Study } from './study.js';
 
@@ -35,29 +37,41 @@ export function lifeCost(life: Life, weights: PresentWeights): number {
   return found.reduce((sum, { month, amount }) => sum + amount * replacementIn[month]!, 0);
 }
 
-/** The most that is saved, and the fewest kvarh that are connected, from each month to the end of the record. */
+/** The most that is saved, the fewest kvarh connected and switchings, from each month to the end of the record. */
 export interface BoundRest {
   /** present value; one more than there are months */
   mostSaving: Float64Array;
   /** [kvarh] */
   leastKvarh: Float64Array;
+  leastSwitchings: Pick<LeastSwitchings, 'after'>;
+}
+
+/** Bounds of single months. */
+export interface MonthBounds {
+  /** no bill of a month is lower */
+  leastBill: Float64Array;
+  /** no fewer kvarh are connected in a month [kvarh] */
+  leastKvarh: Float64Array;
+  /** rises and falls of the connected kvar, none of them smaller [kvar] */
+  leastMovesKvar: number[][];
 }
 
 /**
  * Bounds of all that is to come after each month.
  * @param ground what every candidate is valued with
- * @param leastBill no bill of a month is lower
- * @param leastKvarh no fewer kvarh are connected in a month [kvarh]
+ * @param bounds of single months
  * @returns sums from each month to the last
  * @source derived
  */
-export function boundRest(ground: WorthGround, leastBill: Float64Array, leastKvarh: Float64Array): BoundRest {
-  const months = leastBill.length;
-  const rest = { mostSaving: new Float64Array(months + 1), leastKvarh: new Float64Array(months + 1) };
+export function boundRest(ground: WorthGround, bounds: MonthBounds): BoundRest {
+  const months = bounds.leastBill.length;
+  const column = (): Float64Array => new Float64Array(months + 1);
+  const leastSwitchings = new LeastSwitchings(bounds.leastMovesKvar);
+  const rest = { mostSaving: column(), leastKvarh: column(), leastSwitchings };
   for (let m = months - 1; m >= 0; m--) {
-    const saving = ground.weights.savingOfMonth[m]! * (ground.beforeTotals[m]! - leastBill[m]!);
+    const saving = ground.weights.savingOfMonth[m]! * (ground.beforeTotals[m]! - bounds.leastBill[m]!);
     rest.mostSaving[m] = rest.mostSaving[m + 1]! + saving;
-    rest.leastKvarh[m] = rest.leastKvarh[m + 1]! + leastKvarh[m]!;
+    rest.leastKvarh[m] = rest.leastKvarh[m + 1]! + bounds.leastKvarh[m]!;
   }
   return rest;
 }
@@ -73,6 +87,8 @@ export class BuildWorth {
   /** present value of a kvarh connected over the record */
   readonly #lossPerKvarh: number;
   readonly #yearly: number;
+  readonly #largestKvar: number;
+  readonly #wear: LeastWear;
 
   /**
    * @param ground what every candidate is valued with
@@ -92,6 +108,8 @@ export class BuildWorth {
     const capacitors = (prices.perKvar ?? 0) * build.ratedKvar * (prices.replacementFactor ?? 1);
     this.#certainCost =
       this.capital + maintenance * ground.weights.maintenancePerYear + capacitors * ground.capacitorLives;
+    this.#largestKvar = build.largestKvar;
+    this.#wear = leastWear(build, cost, ground.weights);
     this.#lossPerKvarh = ((this.#yearly * lossW) / 1000) * (prices.lossPricePerKwh ?? 0) * ground.weights.lossPerYear;
   }
 
@@ -107,12 +125,18 @@ export class BuildWorth {
     const { beforeTotals, weights } = this.#ground;
     let saving = rest.mostSaving[monthsDone]!;
     let kvarh = rest.leastKvarh[monthsDone]!;
-    if (run === null || monthsDone === 0) return saving - this.#certainCost - this.#lossPerKvarh * kvarh;
+    const toCome = rest.leastSwitchings.after(monthsDone, this.#largestKvar);
+    if (run === null || monthsDone === 0) {
+      return saving - this.#certainCost - this.#lossPerKvarh * kvarh - this.#wear.leastCost(toCome * this.#yearly);
+    }
     for (let m = 0; m < monthsDone; m++) {
       saving += weights.savingOfMonth[m]! * (beforeTotals[m]! - run.afterTotals[m]!);
     }
     kvarh += run.connectedKvarh[monthsDone - 1]!;
-    return saving - this.#certainCost - this.#lossPerKvarh * kvarh - this.#leastSwitchCost(run, monthsDone);
+    const done = run.switchings[monthsDone - 1]!.reduce((sum, count) => sum + count, 0);
+    const inAll = this.#wear.leastCost((done + toCome) * this.#yearly);
+    const switches = Math.max(inAll, this.#leastSwitchCost(run, monthsDone));
+    return saving - this.#certainCost - this.#lossPerKvarh * kvarh - switches;
   }
 
   // A switch is replaced no later than its switchings so far say, at the least weight up to then.

@@ -11,6 +11,7 @@ import { overCorrectionKvar } from './reasons.js';
 import { settleControl } from './settle-bank.js';
 import type { Site } from './site.js';
 import { type Operated, operate, type Study } from './study.js';
+import { TargetRuns } from './target-runs.js';
 import { leastTotalKvar } from './total-bound.js';
 
 /** The bank that was chosen, and what it falls short of where nothing was clear. */
@@ -19,6 +20,8 @@ export interface Chosen {
   control: Control;
   assumptions: Remark[];
   shortOf: 'onlyWatch' | 'targetOutOfReach' | 'onlyAvoid' | null;
+  /** the bank simulated */
+  operated: Operated;
 }
 
 /**
@@ -43,6 +46,7 @@ class Chooser {
   readonly #catalogue: SettledCatalogue;
   readonly #watch: Watch | undefined;
   readonly #candidates: BankCandidates;
+  readonly #runs: TargetRuns;
 
   constructor(study: Study, site: Site, catalogue: SettledCatalogue, watch: Watch | undefined) {
     this.#study = study;
@@ -50,6 +54,7 @@ class Chooser {
     this.#catalogue = catalogue;
     this.#watch = watch;
     this.#candidates = new BankCandidates(study, site, catalogue);
+    this.#runs = new TargetRuns(study);
   }
 
   choose(): Chosen | null {
@@ -73,8 +78,8 @@ class Chooser {
       const operated = this.#leastSetPoint(candidate);
       if (operated === null) continue;
       const verdict = overallVerdict(this.#study, judge(this.#study, candidate.bank, operated.control));
-      if (verdict === 'clear') return this.#chosen(candidate, operated.control, null);
-      if (verdict === 'watch') watched ??= this.#chosen(candidate, operated.control, 'onlyWatch');
+      if (verdict === 'clear') return this.#chosen(candidate, operated, null);
+      if (verdict === 'watch') watched ??= this.#chosen(candidate, operated, 'onlyWatch');
     }
     return watched;
   }
@@ -127,17 +132,20 @@ class Chooser {
 
   // The lowest set point that meets the target in every month without over-correcting.
   #leastSetPoint(candidate: Candidate): Operated | null {
+    const { targetPowerFactor } = this.#study.site;
     for (const setPointPowerFactor of this.#setPoints()) {
-      const operated = this.#operated(candidate, setPointPowerFactor);
-      if (!meetsTarget(operated.months, this.#study.site.targetPowerFactor)) continue;
+      const operated = this.#runs.run(candidate.bank, this.#control(candidate, setPointPowerFactor), (month) =>
+        meetsTarget([month], targetPowerFactor),
+      );
+      if (operated === null) continue;
       return this.#overCorrects(candidate, operated) ? null : operated;
     }
     return null;
   }
 
-  #operated(candidate: Candidate, setPointPowerFactor: number): Operated {
-    const { control } = settleControl(this.#site.control, candidate.bank, this.#study.site);
-    return operate(this.#study, candidate.bank, { ...control, setPointPowerFactor });
+  #control({ bank }: Candidate, setPointPowerFactor: number): Control {
+    const { control } = settleControl(this.#site.control, bank, this.#study.site);
+    return { ...control, setPointPowerFactor };
   }
 
   #overCorrects(candidate: Candidate, operated: Operated): boolean {
@@ -148,32 +156,40 @@ class Chooser {
   #nearest(all: Candidate[]): Chosen | null {
     const setPoints = this.#setPoints();
     const setPointPowerFactor = setPoints[setPoints.length - 1]!;
-    let best: { candidate: Candidate; control: Control; lowest: number } | null = null;
+    let best: { candidate: Candidate; operated: Operated; lowest: number } | null = null;
     for (const candidate of all) {
       if (this.#flows(candidate) === 'avoid') continue;
-      const operated = this.#operated(candidate, setPointPowerFactor);
-      const lowest = operated.months.reduce((low, month) => Math.min(low, month.powerFactorLagging ?? 1), 1);
-      if (best !== null && lowest <= best.lowest + 1e-9) continue;
-      if (this.#overCorrects(candidate, operated)) continue;
+      const passed: number = best === null ? Number.NEGATIVE_INFINITY : best.lowest + 1e-9;
+      let lowest = 1;
+      const operated = this.#runs.run(
+        candidate.bank,
+        this.#control(candidate, setPointPowerFactor),
+        ({ powerFactorLagging }) => {
+          lowest = Math.min(lowest, powerFactorLagging ?? 1);
+          return lowest > passed;
+        },
+      );
+      if (operated === null || this.#overCorrects(candidate, operated)) continue;
       if (judge(this.#study, candidate.bank, operated.control).verdict === 'avoid') continue;
-      best = { candidate, control: operated.control, lowest };
+      best = { candidate, operated, lowest };
     }
-    return best === null ? null : this.#chosen(best.candidate, best.control, 'targetOutOfReach');
+    return best === null ? null : this.#chosen(best.candidate, best.operated, 'targetOutOfReach');
   }
 
   #despiteLimits(candidates: Candidate[]): Chosen {
     for (const candidate of candidates) {
       const operated = this.#leastSetPoint(candidate);
-      if (operated !== null) return this.#chosen(candidate, operated.control, 'onlyAvoid');
+      if (operated !== null) return this.#chosen(candidate, operated, 'onlyAvoid');
     }
     const first = candidates[0]!;
     const setPoints = this.#setPoints();
-    return this.#chosen(first, this.#operated(first, setPoints[setPoints.length - 1]!).control, 'onlyAvoid');
+    const control = this.#control(first, setPoints[setPoints.length - 1]!);
+    return this.#chosen(first, operate(this.#study, first.bank, control), 'onlyAvoid');
   }
 
-  #chosen(candidate: Candidate, control: Control, shortOf: Chosen['shortOf']): Chosen {
-    const { assumptions } = settleControl(this.#site.control, candidate.bank, this.#study.site);
+  #chosen({ bank }: Candidate, operated: Operated, shortOf: Chosen['shortOf']): Chosen {
+    const { assumptions } = settleControl(this.#site.control, bank, this.#study.site);
     const withoutSetPoint = assumptions.filter(({ path }) => path !== 'control.setPointPowerFactor');
-    return { bank: candidate.bank, control, assumptions: withoutSetPoint, shortOf };
+    return { bank, control: operated.control, assumptions: withoutSetPoint, shortOf, operated };
   }
 }

@@ -1,7 +1,8 @@
 import type { Bank } from '../layout/bank.js';
+import { compensatedSum } from '../quantity/compensated-sum.js';
 import { bankFigures } from './bank-figures.js';
 import { type Figure, figure } from './figure.js';
-import { dutyFigures, neutralFigure, supplyFigures } from './network-figures.js';
+import { distortionFigures, dutyFigures, neutralFigure, supplyFigures } from './network-figures.js';
 import type { Result } from './result.js';
 import type { Operated, Study } from './study.js';
 
@@ -21,6 +22,7 @@ export function figures(study: Study, bank: Bank, operated: Operated, result: Re
     ...supplyFigures(study, result),
     ...bankFigures(study, bank, result),
     ...operationFigures(study, bank, operated, result),
+    ...distortionFigures(result),
     ...dutyFigures(result),
   ];
 }
@@ -47,8 +49,6 @@ function requirementFigures(study: Study, result: Result): Figure[] {
   const p = study.load.activeKw[worst]!;
   const q = study.load.reactiveKvar[worst]!;
   const ascending = Float64Array.from(study.needKvar).sort();
-  const position = (ascending.length - 1) * 0.99;
-  const below = Math.floor(position);
   const need =
     study.load.metering.at === 'bus'
       ? figure(
@@ -72,17 +72,29 @@ function requirementFigures(study: Study, result: Result): Figure[] {
         );
   return [
     need,
+    quantileFigure('requirement.p99Kvar', requirement.p99Kvar, ascending, 0.99),
+    quantileFigure('requirement.p95Kvar', requirement.p95Kvar, ascending, 0.95),
     figure(
-      'requirement.p99Kvar',
-      { value: requirement.p99Kvar, unit: 'kvar' },
-      { formula: 'a + f · (b − a)', source: 'method, requirement' },
+      'requirement.meanKvar',
+      { value: requirement.meanKvar, unit: 'kvar' },
+      { formula: 'S / n', source: 'method, requirement' },
       [
-        ['a', ascending[below]!, 'kvar'],
-        ['b', ascending[Math.min(ascending.length - 1, below + 1)]!, 'kvar'],
-        ['f', position - below, ''],
+        ['S', compensatedSum(study.needKvar), 'kvar'],
+        ['n', study.needKvar.length, ''],
       ],
     ),
   ];
+}
+
+/** Between the two neighbours of a rank, in proportion. */
+function quantileFigure(id: string, value: number, ascending: Float64Array, share: number): Figure {
+  const position = (ascending.length - 1) * share;
+  const below = Math.floor(position);
+  return figure(id, { value, unit: 'kvar' }, { formula: 'a + f · (b − a)', source: 'method, requirement' }, [
+    ['a', ascending[below]!, 'kvar'],
+    ['b', ascending[Math.min(ascending.length - 1, below + 1)]!, 'kvar'],
+    ['f', position - below, ''],
+  ]);
 }
 
 function operationFigures(study: Study, bank: Bank, operated: Operated, result: Result): Figure[] {
@@ -101,8 +113,31 @@ function operationFigures(study: Study, bank: Bank, operated: Operated, result: 
       ]),
     );
   }
-  if (bank.groups.length > 0) found.push(...transformerFigures(study, operated));
+  if (bank.groups.length > 0) found.push(...switchingFigures(result), ...transformerFigures(study, operated));
   return [...found, ...neutralFigure(study)];
+}
+
+function switchingFigures({ operation, record }: Result): Figure[] {
+  const { switchings, totalSwitchings, shareInTargetPct } = operation;
+  const symbols = switchings.map((_, at) => `s_${at + 1}`);
+  const n = record.intervals;
+  return [
+    figure(
+      'operation.totalSwitchings',
+      { value: totalSwitchings, unit: '' },
+      { formula: symbols.join(' + '), source: 'method, operation' },
+      switchings.map((count, at) => [symbols[at]!, count, ''] as const),
+    ),
+    figure(
+      'operation.shareInTargetPct',
+      { value: shareInTargetPct, unit: '%' },
+      { formula: '100 · n_t / n', source: 'method, operation' },
+      [
+        ['n_t', Math.round((shareInTargetPct * n) / 100), ''],
+        ['n', n, ''],
+      ],
+    ),
+  ];
 }
 
 // At the interval of greatest apparent power before the bank; what the transformer carries is the bus power.

@@ -1,4 +1,4 @@
-import { strongestOhm } from '../network/network-check.js';
+import { type NetworkLevel, strongestOhm } from '../network/network-check.js';
 import { neutralA } from '../network/summation.js';
 import { supplyPath } from '../supply/supply-path.js';
 import { type Figure, figure } from './figure.js';
@@ -127,4 +127,38 @@ export function dutyFigures(result: BankResult): Figure[] {
       ),
     ];
   });
+}
+
+/**
+ * Voltage distortion at the bus, in the worst corner of the worst level and with no stage in.
+ * @param result network of the result
+ * @returns a figure each where any order is present
+ * @source method-figures
+ */
+export function distortionFigures({ network }: BankResult): Figure[] {
+  const worstOf = (levels: readonly NetworkLevel[]) =>
+    levels.reduce<NetworkLevel | null>(
+      (worst, level) => (worst !== null && worst.voltageDistortionPct >= level.voltageDistortionPct ? worst : level),
+      null,
+    );
+  return [
+    ...distortionFigure('network.worstDistortionPct', worstOf(network.levels)),
+    ...distortionFigure(
+      'network.distortionWithoutBankPct',
+      worstOf(network.levels.filter(({ levelKvar }) => levelKvar < 1e-6)),
+    ),
+  ];
+}
+
+function distortionFigure(id: string, level: NetworkLevel | null): Figure[] {
+  if (level === null || !(level.voltageDistortionPct > 0)) return [];
+  const symbols = level.orders.map(({ orderH }) => `U_${String(orderH).replace('.', '_')}`);
+  return [
+    figure(
+      id,
+      { value: level.voltageDistortionPct, unit: '%' },
+      { formula: `√(${symbols.map((symbol) => `${symbol}^2`).join(' + ')})`, source: 'IEC 61000-2-4:2002' },
+      level.orders.map(({ voltagePct }, at) => [symbols[at]!, voltagePct, '%'] as const),
+    ),
+  ];
 }

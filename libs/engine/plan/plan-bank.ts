@@ -56,6 +56,7 @@ function planByTarget(study: Study, site: Site, money: MoneyStudy | null, watch?
   return outcomeOf('plan', study, {
     bank,
     control: chosen?.control ?? settleControl(site.control, bank, study.site).control,
+    ...(chosen === null ? {} : { operated: chosen.operated }),
     said: {
       reasons: chosen === null ? [remark('layout.noCandidate', {}, { path: 'catalogue' })] : nearestReasons(chosen),
       assumptions: [

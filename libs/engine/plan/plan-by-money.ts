@@ -1,8 +1,7 @@
 import type { Verdict } from '../duty/rules.js';
 import type { Bank } from '../layout/bank.js';
-import { type SettledCatalogue, settleCatalogue } from '../layout/candidates.js';
-import { type SearchSpace, searchSpace, switchKinds } from '../layout/search-space.js';
-import type { CostBasis } from '../money/capital.js';
+import type { SettledCatalogue } from '../layout/candidates.js';
+import type { SearchSpace } from '../layout/search-space.js';
 import type { Alternative, Recommended } from '../money/money-result.js';
 import type { Control } from '../operation/control.js';
 import { meetsTarget, operationMonths } from '../operation/operation.js';
@@ -15,10 +14,10 @@ import { outcomeOf } from './outcome-of.js';
 import { bankLines } from './plan-lines.js';
 import { moneyOf, type Priced, priceBank } from './price-bank.js';
 import { type Finished, NEAR_VALUE, type SearchAnswer, search } from './search.js';
-import { SiteSearchJudge } from './search-judge.js';
-import { setPointsOf } from './set-points.js';
+import type { SiteSearchJudge } from './search-judge.js';
 import { settleBank, settleControl } from './settle-bank.js';
 import type { Site } from './site.js';
+import { siteSearch } from './site-search.js';
 import { type Operated, operate, type Study } from './study.js';
 import type { WeighedBank } from './weighed-bank.js';
 
@@ -42,7 +41,6 @@ interface Asked {
   study: Study;
   site: Site;
   money: MoneyStudy;
-  prices: Omit<CostBasis, 'switchKind'>;
 }
 
 /**
@@ -57,18 +55,8 @@ interface Asked {
  * @source method-money
  */
 export function planByMoney(study: Study, site: Site, money: MoneyStudy, watch?: Watch): Outcome {
-  if (money.prices === null) throw new Error('a search needs prices');
-  const asked: Asked = { study, site, money, prices: money.prices };
-  const { catalogue, absent } = settleCatalogue(site.catalogue, 2);
-  const space = searchSpace({
-    catalogue,
-    evenSteps: site.catalogue?.evenSteps ?? true,
-    kinds: switchKinds(site.catalogue, site.prices?.switches?.[0]?.kind ?? null),
-    setPoints: setPointsOf(site, study.site.targetPowerFactor),
-    nominalV: study.site.nominalV,
-    greatestKvar: study.load.reactiveKvar.reduce((most, kvar) => Math.max(most, kvar), 0),
-  });
-  const searchJudge = new SiteSearchJudge({ study, site, money, prices: money.prices, catalogue, space });
+  const asked: Asked = { study, site, money };
+  const { catalogue, absent, space, judge: searchJudge } = siteSearch(study, site, money);
   const answer = search(space, searchJudge, watch);
   const ways = [
     doNothing(asked),

@@ -1,7 +1,10 @@
+import type { Duty } from '../duty/duty-row.js';
+import { closingDuties } from '../duty/judge-bank.js';
 import { couplesAtPrimary } from '../duty/limits-point.js';
 import { type FirmVerdict, firmVerdict } from '../duty/quick-judge.js';
 import type { Verdict } from '../duty/rules.js';
 import type { Bank } from '../layout/bank.js';
+import { bankLevels } from '../layout/levels.js';
 import type { Loads } from '../network/loads.js';
 import { siteNetwork } from '../network/network-model.js';
 import type { Control } from '../operation/control.js';
@@ -63,11 +66,13 @@ const CLOSED_IN = 1e-3;
  * @source method-robustness
  */
 export function robustness(study: Judged, bank: Bank, control: Control): Robustness {
-  const present = overallVerdict(study, judgeMoved(study, bank, control, { quantity: 'load', factor: 1 }));
+  const closing = closingDuties(study.model, bank, bankLevels(bank, study.site.nominalV), basisOf(study, control));
+  const judgedAt = (quantity: MovedQuantity, factor: number): Verdict =>
+    overallVerdict(study, judgeMoved(study, bank, control, { quantity, factor, closing }));
+  const present = judgedAt('load', 1);
   return {
     ranges: MOVED_QUANTITIES.filter((quantity) => applies(study.site, quantity)).map((quantity) => {
-      const verdictAt = (factor: number): Verdict =>
-        overallVerdict(study, judgeMoved(study, bank, control, { quantity, factor }));
+      const verdictAt = (factor: number): Verdict => judgedAt(quantity, factor);
       const [leastTried, mostTried] = TRIED[quantity];
       const down = changeTowards(verdictAt, present, { end: leastTried, steps: STEPS, closedIn: CLOSED_IN });
       const up = changeTowards(verdictAt, present, { end: mostTried, steps: STEPS, closedIn: CLOSED_IN });
@@ -94,7 +99,7 @@ function applies(site: SettledSite, quantity: MovedQuantity): boolean {
  * @param study site and network
  * @param bank the bank
  * @param control settings
- * @param moved what is moved, by which factor
+ * @param moved what is moved, by which factor; rows of exact inrush where they are known
  * @returns the judgement
  * @source method-robustness
  */
@@ -102,7 +107,7 @@ export function judgeMoved(
   study: Judged,
   bank: Bank,
   control: Control,
-  { quantity, factor }: { quantity: MovedQuantity; factor: number },
+  { quantity, factor, closing }: { quantity: MovedQuantity; factor: number; closing?: readonly Duty[] },
 ): FirmVerdict {
   const { site, model } = study;
   const loads =
@@ -119,7 +124,9 @@ export function judgeMoved(
   });
   const aged = quantity === 'capacitance' ? withCapacitance(bank, factor) : bank;
   const basis = { ...basisOf(study, control), supply, loads };
-  return firmVerdict(moved, aged, basis);
+  // Harmonics have no part in a closing.
+  const closes = quantity === 'load' || quantity === 'background' ? closing : undefined;
+  return firmVerdict(moved, aged, basis, closes);
 }
 
 function movedLoads(loads: Loads, quantity: 'load' | 'background', factor: number): Loads {

@@ -6,11 +6,12 @@ import { controlReach } from '../operation/control-reach.js';
 import type { ControllerView } from '../operation/controller-view.js';
 import { CellBounds, type CellSize } from './bound-cell.js';
 import { boundRest, type WorthGround } from './candidate-worth.js';
+import { MonthCells } from './month-cell.js';
 import type { Candidate, SharedBound } from './search.js';
 import type { Study } from './study.js';
 
 /** Totals and reaches within these ratios share their bounds. */
-const RATIO = { about: 1.12, size: 1.01, reach: 1.2 } as const;
+const RATIO = { about: 1.2, size: 1.05, reach: 1.3 } as const;
 /** Keys of bounds: room for steps of size and of reach, each from −600 on. */
 const STEPS = 2000;
 const STEP_ZERO = 600;
@@ -20,7 +21,7 @@ export class SharedBounds {
   readonly #study: Study;
   readonly #space: SearchSpace;
   readonly #worth: WorthGround;
-  readonly #cells: CellBounds;
+  readonly #cells: Pick<CellBounds, 'cell'>;
   readonly #bounds = new Map<number, SharedBound>();
 
   /**
@@ -32,7 +33,8 @@ export class SharedBounds {
     this.#study = ground.study;
     this.#space = space;
     this.#worth = ground;
-    this.#cells = new CellBounds(ground.study, rangeTariff(prepared));
+    const ranged = rangeTariff(prepared);
+    this.#cells = MonthCells.of(ground.study, ranged) ?? new CellBounds(ground.study, ranged);
   }
 
   /**
@@ -75,7 +77,7 @@ export class SharedBounds {
     const known = this.#bounds.get(key);
     if (known !== undefined) return known;
     const cell = this.#cells.cell(size());
-    const rest = boundRest(this.#worth, cell.leastBill, cell.leastKvarh);
+    const rest = boundRest(this.#worth, cell);
     const made = { ...rest, mostLowestFactor: cell.mostLowestFactor };
     this.#bounds.set(key, made);
     return made;

@@ -3,7 +3,7 @@ import type { Bank } from '../layout/bank.js';
 import { type NetworkModel, siteNetwork } from '../network/network-model.js';
 import type { Control } from '../operation/control.js';
 import type { ControllerView } from '../operation/controller-view.js';
-import { type MeterAfter, meterAfter } from '../operation/meter-after.js';
+import { type MeterAfter, meterAfter, meterAfterInto } from '../operation/meter-after.js';
 import { type OperationMonth, operationMonths, type Simulated } from '../operation/operation.js';
 import { simulate } from '../operation/simulate.js';
 import { switchedBank } from '../operation/switched-bank.js';
@@ -17,6 +17,7 @@ import { needColumn, type Target, targetKw } from '../requirement/need.js';
 import { type RequirementSummary, summarizeRequirement } from '../requirement/requirement.js';
 import { meteringOf } from './metering-of.js';
 import { type TurnedLoad, turnedLoad } from './recorded-bank.js';
+import { runColumns } from './run-columns.js';
 import { settleSite } from './settle-site.js';
 import type { SettledSite } from './settled-site.js';
 import type { Site } from './site.js';
@@ -155,11 +156,19 @@ export function controllerView(study: Study, setPointPowerFactor: number): Contr
  * Meter columns with the same stages connected throughout; a bound on what any bank of that size can do.
  * @param study site and record
  * @param kvar effective kvar connected at the bus, at nominal voltage; each interval's voltage scales it [kvar]
+ * @param columns written over; new ones where absent
  * @returns columns at the meter
  */
-export function meterWithConstant(study: Study, kvar: number): MeterAfter {
-  const connectedKvar = new Float64Array(study.record.beginS.length).fill(kvar);
-  return meterAfter(study.record, study.load, atVoltage(connectedKvar, study.voltageScale));
+export function meterWithConstant(
+  study: Study,
+  kvar: number,
+  { connectedKvar, meter } = runColumns(study.record.beginS.length),
+): MeterAfter {
+  const { record, load, voltageScale } = study;
+  connectedKvar.fill(kvar);
+  if (voltageScale !== null) for (let i = 0; i < connectedKvar.length; i++) connectedKvar[i]! *= voltageScale[i]!;
+  meterAfterInto(meter, { record, load, connectedKvar }, 0, connectedKvar.length);
+  return meter;
 }
 
 function atVoltage(connectedKvar: Float64Array, voltageScale: Float64Array | null): Float64Array {

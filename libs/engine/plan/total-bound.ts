@@ -1,4 +1,5 @@
 import { tanFromPowerFactor } from '../quantity/power-factor.js';
+import { runColumns } from './run-columns.js';
 import { meterWithConstant, type Study } from './study.js';
 
 /** The bound is narrowed until its bracket is this wide [kvar]. */
@@ -28,17 +29,26 @@ export function leastTotalKvar(study: Study, mostKvar: number): number | null {
 
 function bound(study: Study): (totalKvar: number) => boolean {
   const tan = tanFromPowerFactor(study.site.targetPowerFactor);
+  const { starts, names } = study.months;
   const withoutKw = meterWithConstant(study, 0).activeKw;
-  return (totalKvar) => {
-    const meter = meterWithConstant(study, totalKvar);
-    const excess = new Float64Array(study.months.names.length);
-    const energy = new Float64Array(study.months.names.length);
-    for (let i = 0; i < withoutKw.length; i++) {
-      const month = study.months.ofInterval[i]!;
-      const kw = Math.max(0, withoutKw[i]!, meter.activeKw[i]!);
-      energy[month]! += kw;
-      excess[month]! += meter.laggingKvar[i]! - kw * tan;
+  const columns = runColumns(withoutKw.length);
+  const monthMeets = (m: number): boolean => {
+    const { activeKw, laggingKvar } = columns.meter;
+    let excess = 0;
+    let energy = 0;
+    for (let i = starts[m]!; i < starts[m + 1]!; i++) {
+      const kw = Math.max(0, withoutKw[i]!, activeKw[i]!);
+      energy += kw;
+      excess += laggingKvar[i]! - kw * tan;
     }
-    return excess.every((kvar, month) => kvar <= 1e-9 * (1 + energy[month]!) || energy[month] === 0);
+    return excess <= 1e-9 * (1 + energy) || energy === 0;
+  };
+  // The month that missed last is looked at first: it is likely to miss again.
+  const order = [...names.keys()];
+  return (totalKvar) => {
+    meterWithConstant(study, totalKvar, columns);
+    const missing = order.findIndex((m) => !monthMeets(m));
+    if (missing >= 0) order.unshift(...order.splice(missing, 1));
+    return missing < 0;
   };
 }

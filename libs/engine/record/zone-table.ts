@@ -92,19 +92,19 @@ export function dayNumber(year: number, month: number, day: number): number {
 export interface MonthIndex {
   /** "2018-01" … */
   names: string[];
-  /** month of each interval, an index into `names`, length n */
-  ofInterval: Uint16Array;
+  /** first interval of each month, and n at the end; one entry more than `names` */
+  starts: number[];
 }
 
 /**
  * Sorts intervals into the local calendar months of their beginnings.
  * @param beginS interval beginnings [s], ascending, length n
  * @param table the site's zone
- * @returns names and one index an interval
+ * @returns names and where each month begins
  */
 export function monthIndex(beginS: Float64Array, table: ZoneTable): MonthIndex {
   const names: string[] = [];
-  const ofInterval = new Uint16Array(beginS.length);
+  const starts: number[] = [];
   let dayOfLast = Number.NaN;
   for (let i = 0; i < beginS.length; i++) {
     const localS = beginS[i]! + offsetAtS(table, beginS[i]!);
@@ -113,9 +113,11 @@ export function monthIndex(beginS: Float64Array, table: ZoneTable): MonthIndex {
       dayOfLast = day;
       const { year, month } = civilDate(day);
       const name = `${String(year).padStart(4, '0')}-${String(month).padStart(2, '0')}`;
-      if (names[names.length - 1] !== name) names.push(name);
+      if (names[names.length - 1] !== name) {
+        names.push(name);
+        starts.push(i);
+      }
     }
-    ofInterval[i] = names.length - 1;
   }
-  return { names, ofInterval };
+  return { names, starts: [...starts, beginS.length] };
 }

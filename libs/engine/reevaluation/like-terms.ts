@@ -140,12 +140,12 @@ function sameHours(weeks: readonly Week[]): SameHours | null {
 }
 
 function calendarMonths({ record, zone }: ClockedRecord): Map<number, Sums> {
-  const { names, ofInterval } = monthIndex(record.beginS, zone);
+  const { names, starts } = monthIndex(record.beginS, zone);
   const months = new Map<number, Sums>();
-  for (let i = 0; i < record.beginS.length; i++) {
-    const month = Number(names[ofInterval[i]!]!.slice(5));
+  for (const [m, name] of names.entries()) {
+    const month = Number(name.slice(5));
     const sums = months.get(month) ?? newSums();
-    add(sums, record, i);
+    for (let i = starts[m]!; i < starts[m + 1]!; i++) add(sums, record, i);
     months.set(month, sums);
   }
   return months;

@@ -1,4 +1,4 @@
-import { compensatedSum, Total } from '../quantity/compensated-sum.js';
+import { compensatedSum } from '../quantity/compensated-sum.js';
 import { percentile } from '../quantity/percentile.js';
 import { energyPowerFactor, tanFromPowerFactor } from '../quantity/power-factor.js';
 import type { LoadRecord } from '../record/load-record.js';
@@ -67,32 +67,26 @@ function requirementMonth(
   months: MonthIndex,
   { m, targetPowerFactor }: { m: number; targetPowerFactor: number },
 ): RequirementMonth {
-  const active = new Total();
-  const lagging = new Total();
-  const leading = new Total();
+  const from = months.starts[m]!;
+  const end = months.starts[m + 1]!;
   let maxKw = Number.NEGATIVE_INFINITY;
   let neededKvar = 0;
-  let count = 0;
-  for (let i = 0; i < needKvar.length; i++) {
-    if (months.ofInterval[i] !== m) continue;
-    count++;
-    active.add(Math.max(record.activeKw[i]!, 0));
-    lagging.add(record.laggingKvar[i]!);
-    leading.add(record.leadingKvar[i]!);
+  for (let i = from; i < end; i++) {
     maxKw = Math.max(maxKw, record.activeKw[i]!);
     neededKvar = Math.max(neededKvar, needKvar[i]!);
   }
   const hours = record.intervalS / 3600;
-  const activeKwh = active.value * hours;
-  const laggingKvarh = lagging.value * hours;
+  const activeKwh = compensatedSum(record.activeKw, from, end, 0) * hours;
+  const laggingKvarh = compensatedSum(record.laggingKvar, from, end) * hours;
   return {
     month: months.names[m]!,
     activeKwh,
     laggingKvarh,
-    leadingKvarh: leading.value * hours,
+    leadingKvarh: compensatedSum(record.leadingKvar, from, end) * hours,
     powerFactorLagging: energyPowerFactor(activeKwh, laggingKvarh),
     maxKw,
     neededKvar,
-    energyNeedKvar: Math.max(0, laggingKvarh - activeKwh * tanFromPowerFactor(targetPowerFactor)) / (count * hours),
+    energyNeedKvar:
+      Math.max(0, laggingKvarh - activeKwh * tanFromPowerFactor(targetPowerFactor)) / ((end - from) * hours),
   };
 }

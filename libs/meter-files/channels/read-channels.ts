@@ -72,7 +72,7 @@ function joined(file: ChannelFile, options: ReadOptions, keep: Keep): { result: 
   const { series, falls, gaps } = asIntervals(ordered, intervalS);
   const rows = allMoments(series);
   const sources = quantitySources(series, rows);
-  const grid = gridRows({ ...rows, values: [], spanS: intervalS }, undefined);
+  const grid = gridRows({ ...rows, agree: () => true, spanS: intervalS }, undefined);
   const built = buildColumns({ ...rows, intervalS, kept: grid.kept, shiftS: 0 }, sources);
   const duplicates = ordered.reduce((sum, { points }) => sum + points.duplicates, 0);
   const conflicts = ordered.reduce((sum, { points }) => sum + points.conflicts, 0);

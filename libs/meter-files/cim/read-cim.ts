@@ -8,20 +8,10 @@ import { SeriesTable } from '../reading-type/series-table.js';
 import type { TimedReadings } from '../reading-type/timed-readings.js';
 import { localToUtc } from '../time/local-times.js';
 import { walkXml } from '../xml/walk-xml.js';
-import { xmlStart } from '../xml/xml-start.js';
 import { XmlText } from '../xml/xml-text.js';
 import { CimMessage } from './cim-message.js';
 
 const DAY_S = 86_400;
-
-/**
- * Whether a file begins like a message of meter readings.
- * @param head the first bytes
- */
-export function isCim(head: Uint8Array): boolean {
-  const start = xmlStart(head);
-  return /<(?:[\w.-]+:)?MeterReadings[\s>]/.test(start) || /iec\.ch\/TC57\/[^"']*MeterReadings#/i.test(start);
-}
 
 /**
  * Reads a MeterReadings message. Stamps without an offset are of the zone that is said.

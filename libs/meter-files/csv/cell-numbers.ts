@@ -1,6 +1,6 @@
 import { shown } from '#libs/contract/shown.js';
 import type { RowProblems } from '../row-problems.js';
-import { type DecimalMark, KEPT_COLUMNS } from './decimal-mark.js';
+import type { DecimalMark } from './decimal-mark.js';
 import { type NumberCell, readNumberInto, readNumberText } from './number-cell.js';
 import type { RowCells } from './row-cells.js';
 
@@ -40,7 +40,7 @@ export class CellNumbers {
     else readNumberInto(cells.bytes, cells.from[column]!, cells.to[column]!, cell);
     if (cell.form === 'missing') return Number.NaN;
     if (cell.form === 'wrong') return this.refuse(cells, { column, row }, 'a number', lenient);
-    const place = { quoted: cells.quoting[column]! > 0, row, kept: index * KEPT_COLUMNS + k };
+    const place = { quoted: cells.quoting[column]! > 0, row, index, k };
     const value = this.mark.numberOf(cell, place);
     if (!Number.isNaN(value)) return value;
     const asBefore = this.mark.settledAtRow > 0 ? `, as in row ${this.mark.settledAtRow}` : '';

@@ -1,69 +1,23 @@
 import type { QuantitySource } from '../record/build-columns.js';
 import type { IntervalGrid } from '../record/interval-grid.js';
-import type { QuantityColumn } from './column-choice.js';
-import type { CsvFile, CsvMeaning, ReadRows } from './csv-meaning.js';
+import type { ColumnFacts } from './column-facts.js';
+import type { CsvMeaning } from './csv-meaning.js';
 import type { CsvQuantity } from './csv-quantity.js';
-import { type DecimalSign, KEPT_COLUMNS, thousands } from './decimal-mark.js';
-import { differencesOf, energyColumns, movesOf } from './energy-registers.js';
+import { differencesOf } from './energy-registers.js';
+import { inBase, isWhole, type RawColumn } from './raw-columns.js';
 import { sumOf, type WorkedOutPowers, workedOutPowers } from './worked-out-powers.js';
-
-/** A column of a file in the meaning it is read under. */
-export interface RawColumn extends QuantityColumn {
-  values: Float64Array;
-}
-
-/**
- * The columns of a file under one meaning, as read.
- * @param file what was read
- * @param meaning what it is taken to mean
- * @param missing rows whose quality says that they hold no value
- */
-export function rawColumns(
-  { reader }: CsvFile,
-  { choice, decimal }: CsvMeaning,
-  missing: ReadonlySet<number>,
-): RawColumn[] {
-  const values = valuesUnder(reader, decimal).map((column) => (missing.size === 0 ? column : without(column, missing)));
-  return choice.columns.map((column) => ({ ...column, values: values[reader.columns.indexOf(column.column)]! }));
-}
-
-function without(column: Float64Array, missing: ReadonlySet<number>): Float64Array {
-  const values = column.slice();
-  for (const row of missing) values[row] = Number.NaN;
-  return values;
-}
-
-/**
- * The columns, numbers whose only mark divides thousands put right.
- * @param read rows and what their numbers leave open
- * @param decimal mark they are read under
- */
-export function valuesUnder(
-  { rows, mark }: Pick<ReadRows, 'rows' | 'mark'>,
-  decimal: DecimalSign | null,
-): Float64Array[] {
-  const divided = decimal === ',' ? mark.openDots : decimal === '.' ? mark.openCommas : [];
-  const values = rows.values.map((column) => column.subarray(0, rows.count));
-  const own = new Set<number>();
-  for (const kept of divided) {
-    const k = kept % KEPT_COLUMNS;
-    if (!own.has(k)) values[k] = values[k]!.slice();
-    own.add(k);
-    const index = (kept - k) / KEPT_COLUMNS;
-    values[k]![index] = thousands(values[k]![index]!);
-  }
-  return values;
-}
 
 /** Where the rows stand in time. */
 export interface PlacedRows {
-  grid: IntervalGrid;
+  grid: Pick<IntervalGrid, 'kept' | 'intervalS'>;
   utcS: Float64Array;
   rowNumber: Int32Array;
   /** stamps mark the ends of intervals */
   ends: boolean;
   /** no other meaning is looked at, so that columns may be turned into the record's own in place */
   only: boolean;
+  /** where columns that are worked out come from, all 0 */
+  fresh?: (length: number) => Float64Array;
 }
 
 /** The sources of a record, and what was done to get them. */
@@ -86,33 +40,43 @@ export interface CsvSources {
  * @param raw columns as read
  * @param meaning what they mean
  * @param placed where the rows stand in time
+ * @param facts what the columns show as a whole, of which these rows may be a part
  * @throws InputProblem where the numbers contradict each other
  */
-export function csvSources(raw: readonly RawColumn[], meaning: CsvMeaning, placed: PlacedRows): CsvSources {
-  const registers = registersOf(raw, meaning);
+export function csvSources(
+  raw: readonly RawColumn[],
+  meaning: CsvMeaning,
+  placed: PlacedRows,
+  facts: ColumnFacts,
+): CsvSources {
+  const { registers } = facts;
+  const { only, fresh = (length: number) => new Float64Array(length) } = placed;
   const rows = { ...placed, kept: placed.grid.kept, intervalS: placed.grid.intervalS };
+  // columns that nobody else needs are turned into what they mean where they stand
+  const spare = only && new Set(raw.map(({ column }) => column)).size === raw.length;
   let falls = 0;
   const columns = raw.map((column) => {
-    if (!registers.has(column.column)) return column;
-    const differences = differencesOf(column.values, rows);
+    const power = registers.get(column.column);
+    if (power === undefined) return column;
+    const room = spare ? column.values : fresh(column.values.length);
+    const differences = differencesOf(column.values, rows, { power, room });
     falls += differences.falls;
     return { ...column, values: differences.values };
   });
   const { kept } = placed.grid;
   const inner = registers.size === 0 ? kept : placed.ends ? kept.subarray(1) : kept.subarray(0, -1);
   const groups = groupsOf(columns);
-  const whole = isWhole(groups);
-  const workedOut = whole ? null : workOut(groups, meaning, { ...placed, kept: inner });
+  const whole = isWhole(columns);
+  const workedOut = whole ? null : workOut(groups, meaning, { ...placed, kept: inner, spare }, facts);
   const given = workedOut === null ? [...groups.keys()] : GIVEN_BESIDE;
-  const distinct = new Set(raw.map(({ column }) => column)).size === raw.length;
-  const rest = { intervalS: rows.intervalS, spare: placed.only && distinct && workedOut === null };
+  const rest = { intervalS: rows.intervalS, spare };
   return {
     sources: [
       ...given.flatMap((quantity) => givenSource(groups.get(quantity), meaning, rest)),
       ...(workedOut === null ? [] : workedOutSources(workedOut, groups)),
     ].map((source) => multiplied(source, meaning.multiplier)),
     kept: inner,
-    registers: [...registers],
+    registers: [...registers.keys()],
     falls,
     phases: [...groups.values()].flatMap((group) => (group.length > 1 ? group.map(({ column }) => column) : [])),
     workedOut,
@@ -125,23 +89,6 @@ function groupsOf(columns: readonly RawColumn[]): Groups {
   const groups: Groups = new Map();
   for (const column of columns) groups.set(column.quantity, [...(groups.get(column.quantity) ?? []), column]);
   return groups;
-}
-
-function registersOf(raw: readonly RawColumn[], { energy }: CsvMeaning): Set<number> {
-  if (energy === 'interval') return new Set();
-  const energies = raw.filter(({ unit }) => unit.energy);
-  if (energies.length === 0) return new Set();
-  const found = energyColumns(energies, movesIn(raw));
-  return energy === 'register' ? new Set(energies.map(({ column }) => column)) : found.registers;
-}
-
-/** How each column moves, by its number. */
-export function movesIn(raw: readonly RawColumn[]) {
-  return (column: number) => movesOf(raw.find((other) => other.column === column)!.values);
-}
-
-function isWhole(groups: Groups): boolean {
-  return groups.has('active') && (groups.has('reactive') || groups.has('lagging'));
 }
 
 /** Quantities that are taken as they are even where others are worked out. */
@@ -161,10 +108,19 @@ function givenSource(
   const source = { quantity, column: column + 1, energy: first.unit.energy, over: first.unit.over, spare };
   if (group.length === 1) return [{ ...source, values: first.values, times: first.unit.times * line }];
   if (group.every(({ unit }) => sameUnit(unit, first.unit))) {
-    return [{ ...source, values: sumOf(group.map(({ values }) => values)), times: first.unit.times }];
+    return [{ ...source, spare: true, values: sumOf(group.map(({ values }) => values)), times: first.unit.times }];
   }
   // phases in different units
-  return [{ ...source, values: sumOf(group.map((one) => inBase(one, intervalS))), energy: false, times: 1, over: 1 }];
+  return [
+    {
+      ...source,
+      values: sumOf(group.map((one) => inBase(one, intervalS))),
+      energy: false,
+      times: 1,
+      over: 1,
+      spare: true,
+    },
+  ];
 }
 
 function sameUnit(a: RawColumn['unit'], b: RawColumn['unit']): boolean {
@@ -174,7 +130,8 @@ function sameUnit(a: RawColumn['unit'], b: RawColumn['unit']): boolean {
 function workOut(
   groups: Groups,
   { choice, powerFactorSign }: CsvMeaning,
-  placed: PlacedRows & { kept: Int32Array },
+  placed: PlacedRows & { kept: Int32Array; spare: boolean },
+  { factor, slackKva }: ColumnFacts,
 ): WorkedOutPowers {
   const { intervalS } = placed.grid;
   const of = (quantity: CsvQuantity) => groups.get(quantity)?.map((column) => inBase(column, intervalS)) ?? null;
@@ -194,23 +151,18 @@ function workOut(
     {
       sign: powerFactorSign,
       between: choice.between,
+      factor,
+      slackKva,
       kept: placed.kept,
+      spare: placed.spare,
       rowNumber: placed.rowNumber.subarray(0, placed.utcS.length),
       apparentColumn: numberOf('apparent'),
-      factorColumn: numberOf('powerFactor'),
     },
   );
 }
 
-/** A column in kW, kVA, V or A; energies as means of the interval. */
-function inBase({ values, unit }: RawColumn, intervalS: number): Float64Array {
-  const times = unit.times * (unit.energy ? 3600 : 1);
-  const over = unit.over * (unit.energy ? intervalS : 1);
-  return times === 1 && over === 1 ? values : values.map((value) => (value * times) / over);
-}
-
 function workedOutSources(powers: WorkedOutPowers, groups: Groups): QuantitySource[] {
-  const plain = { energy: false, times: 1, over: 1 };
+  const plain = { energy: false, times: 1, over: 1, spare: true };
   const column =
     ((groups.get('apparent') ?? groups.get('powerFactor') ?? groups.get('current'))?.[0]?.column ?? -1) + 1;
   return [

@@ -1,3 +1,4 @@
+import { RowSet } from '../row-set.js';
 import type { NumberForm } from './number-cell.js';
 
 const COMMA = 0x2c;
@@ -6,6 +7,26 @@ const COMMA = 0x2c;
 export const KEPT_COLUMNS = 128;
 
 export type DecimalSign = '.' | ',';
+
+/** Where a number stands in the file, and the row and column of the values it is kept in. */
+export interface DecimalPlace {
+  quoted: boolean;
+  row: number;
+  index: number;
+  k: number;
+}
+
+/** Places of numbers whose mark is open: rows of each column of the rows' values. */
+export class OpenNumbers {
+  readonly rows: (RowSet | undefined)[] = [];
+  count = 0;
+
+  add({ index, k }: { index: number; k: number }): void {
+    this.rows[k] ??= new RowSet();
+    this.rows[k].add(index);
+    this.count++;
+  }
+}
 
 /**
  * The decimal mark of a file: given, or settled by the first number that can be written in one way only.
@@ -16,9 +37,9 @@ export class DecimalMark {
   sign: DecimalSign | null;
   /** row that settled the sign, 0 where it was given or is not settled */
   settledAtRow = 0;
-  /** places of open numbers read before the sign was settled: row index × KEPT_COLUMNS + column index */
-  readonly openDots: number[] = [];
-  readonly openCommas: number[] = [];
+  /** open numbers read before the sign was settled */
+  readonly openDots = new OpenNumbers();
+  readonly openCommas = new OpenNumbers();
   readonly #bareDotSettles: boolean;
 
   constructor(given: DecimalSign | undefined, delimiter: number) {
@@ -32,11 +53,11 @@ export class DecimalMark {
    * @param place whether the cell is quoted, its row in the file, and where the number is kept
    * @returns the number; NaN where it contradicts the sign that was settled
    */
-  numberOf(cell: { form: NumberForm; value: number }, place: { quoted: boolean; row: number; kept: number }): number {
+  numberOf(cell: { form: NumberForm; value: number }, place: DecimalPlace): number {
     const { form, value } = cell;
     if (form === 'plain' || form === 'missing') return value;
-    if (form === 'openDot' && !(this.#bareDotSettles && !place.quoted)) return this.#openNumber('.', value, place.kept);
-    if (form === 'openComma') return this.#openNumber(',', value, place.kept);
+    if (form === 'openDot' && !(this.#bareDotSettles && !place.quoted)) return this.#openNumber('.', value, place);
+    if (form === 'openComma') return this.#openNumber(',', value, place);
     return this.#settles(form === 'comma' ? ',' : '.', place.row) ? value : Number.NaN;
   }
 
@@ -48,8 +69,8 @@ export class DecimalMark {
     return this.sign === sign;
   }
 
-  #openNumber(mark: DecimalSign, value: number, kept: number): number {
-    if (this.sign === null) (mark === '.' ? this.openDots : this.openCommas).push(kept);
+  #openNumber(mark: DecimalSign, value: number, place: DecimalPlace): number {
+    if (this.sign === null) (mark === '.' ? this.openDots : this.openCommas).add(place);
     else if (this.sign !== mark) return thousands(value);
     return value;
   }

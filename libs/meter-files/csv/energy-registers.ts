@@ -105,6 +105,7 @@ function refuseFalling(column: number, falls: number): never {
 
 /** A register's readings as energies of intervals. */
 export interface Differences {
+  /** of each row in time order; what other rows hold says nothing */
   values: Float64Array;
   /** intervals over which the reading falls: a reset, an exchange or the register's end; they are left without a value */
   falls: number;
@@ -114,30 +115,39 @@ export interface Differences {
  * The energy of each interval from readings at its two ends; a reading belongs to the moment of its stamp.
  * @param readings one a row
  * @param rows in time order, their moments [s], the interval [s], and whether a row stands at its interval's end
+ * @param power of ten of the readings' decimals, see decimalPower
+ * @param room takes the energies; the readings themselves where nobody needs them any more
  */
 export function differencesOf(
   readings: Float64Array,
   rows: { kept: Int32Array; utcS: Float64Array; intervalS: number; ends: boolean },
+  { power, room }: { power: number; room: Float64Array },
 ): Differences {
   const { kept, utcS, intervalS, ends } = rows;
-  const values = new Float64Array(readings.length).fill(Number.NaN);
-  const power = 10 ** decimalsOf(readings);
   let falls = 0;
+  let before = readings[kept[0]!]!;
   for (let i = 1; i < kept.length; i++) {
     const from = kept[i - 1]!;
     const to = kept[i]!;
-    if (utcS[to]! - utcS[from]! !== intervalS) continue;
-    const energy = readings[to]! - readings[from]!;
+    const reading = readings[to]!;
+    const energy = utcS[to]! - utcS[from]! === intervalS ? reading - before : Number.NaN;
     if (energy < 0) falls++;
     // a difference of two readings has no more decimals than they have
-    else values[ends ? to : from] = Math.round(energy * power) / power;
+    room[ends ? to : from] = energy < 0 ? Number.NaN : Math.round(energy * power) / power;
+    before = reading;
   }
-  return { values, falls };
+  // the outermost reading has an interval on one side only
+  if (kept.length > 0) room[kept[ends ? 0 : kept.length - 1]!] = Number.NaN;
+  return { values: room, falls };
 }
 
-/** Decimals that a double of the largest reading's size still holds truly: fifteen digits in all, at most nine behind the mark. */
-function decimalsOf(readings: Float64Array): number {
+/**
+ * Power of ten of the decimals that a double of the largest reading's size still holds truly: fifteen digits in all, at
+ * most nine behind the mark.
+ * @param readings of a register
+ */
+export function decimalPower(readings: Float64Array): number {
   let largest = 1;
   for (const reading of readings) if (Math.abs(reading) > largest) largest = Math.abs(reading);
-  return Math.max(0, Math.min(9, 14 - Math.floor(Math.log10(largest))));
+  return 10 ** Math.max(0, Math.min(9, 14 - Math.floor(Math.log10(largest))));
 }

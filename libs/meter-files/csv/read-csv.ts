@@ -4,7 +4,6 @@ import type { MeterBytes } from '../meter-bytes.js';
 import type { MeterReading, ReadOptions } from '../meter-format.js';
 import { note } from '../note.js';
 import { closeReading } from '../record/close-reading.js';
-import { shownReading } from '../record/reading-shown.js';
 import { type CsvLayout, findLayout, looksTabular } from './csv-layout.js';
 import type { CsvFile } from './csv-meaning.js';
 import { DayRows } from './day-rows.js';
@@ -14,6 +13,7 @@ import { LONGEST_ROW_BYTES, RowBuffer } from './row-buffer.js';
 import { RowCells } from './row-cells.js';
 import type { RowReader } from './row-reader.js';
 import { firstReading, settleMeaning } from './settle-meaning.js';
+import { ReadingRoom } from './shown-reading.js';
 
 /** A header is looked for in so much of the file at once; what lies before it is dropped [bytes]. */
 const VIEW_BYTES = 262_144;
@@ -78,11 +78,12 @@ function refuseEmpty(): never {
 /** A reading for each meter; a meter that can't be read as the file stands has none. */
 function askWhichMeter(file: Omit<CsvFile, 'reader'>, readers: Map<string, RowReader>, meters: number): never {
   const readings: QuestionReading[] = [];
+  const room = new ReadingRoom();
   let failed: InputProblem | undefined;
   for (const [meter, reader] of readers) {
-    const result = firstReading({ ...file, reader });
-    if (result instanceof InputProblem) failed ??= result;
-    else readings.push(shownReading({ meter }, result.columns));
+    const first = firstReading({ ...file, reader }, room);
+    if (first instanceof InputProblem) failed ??= first;
+    else readings.push(first.reading({ meter }));
   }
   if (readings.length === 0) throw failed!;
   throw new Question([{ id: 'meter', about: `which of the ${meters} meters in the file is read`, readings }]);

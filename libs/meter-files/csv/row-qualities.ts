@@ -1,5 +1,6 @@
 import type { MeterMap, QualityMeaning } from '#libs/contract/meter-map.js';
 import { InputProblem } from '#libs/engine/index.js';
+import { RowSet } from '../row-set.js';
 import { meaningOf } from './quality-codes.js';
 import type { RowCells } from './row-cells.js';
 
@@ -12,7 +13,7 @@ export class RowQualities {
   readonly codes: string[] = [];
   readonly #columns: readonly number[];
   /** rows of each code, as indexes of the reader's rows */
-  readonly #rows: number[][] = [];
+  readonly #rows: RowSet[] = [];
   readonly #known = new Map<string, number>();
 
   constructor(columns: readonly number[]) {
@@ -29,8 +30,7 @@ export class RowQualities {
     for (const column of this.#columns) {
       const text = cells.text(column);
       if (text === '') continue;
-      const rows = this.#rows[this.#codeOf(text, rowNumber, column)]!;
-      if (rows[rows.length - 1] !== index) rows.push(index);
+      this.#rows[this.#codeOf(text, rowNumber, column)]!.add(index);
     }
   }
 
@@ -39,18 +39,18 @@ export class RowQualities {
    * @param said what a map or an answer says of codes
    */
   byMeaning(said: Readonly<Record<string, QualityMeaning>>): {
-    missing: Set<number>;
-    estimated: Set<number>;
+    missing: RowSet;
+    estimated: RowSet;
     unknown: { codes: string[]; rows: number };
   } {
-    const missing = new Set<number>();
-    const estimated = new Set<number>();
+    const missing = new RowSet();
+    const estimated = new RowSet();
     const unknown = { codes: [] as string[], rows: 0 };
     for (const [k, code] of this.codes.entries()) {
       const meaning = saidOf(said, code) ?? meaningOf(code);
       if (meaning === null) {
         unknown.codes.push(code);
-        unknown.rows += this.#rows[k]!.length;
+        unknown.rows += this.#rows[k]!.size;
       }
       const rows = meaning === 'missing' ? missing : meaning === 'estimated' ? estimated : null;
       if (rows !== null) for (const index of this.#rows[k]!) rows.add(index);
@@ -81,7 +81,7 @@ export class RowQualities {
       throw new InputProblem([{ code: 'unreadable', row, column: column + 1, expected, found: 'more' }]);
     }
     this.#known.set(text, this.codes.length);
-    this.#rows.push([]);
+    this.#rows.push(new RowSet());
     return this.codes.push(text) - 1;
   }
 }

@@ -4,24 +4,21 @@ import { InputProblem, type Remark } from '#libs/engine/index.js';
 import { note } from '../note.js';
 import type { ReadResult } from '../record/close-reading.js';
 import { ConflictingRows } from '../record/interval-grid.js';
-import { columnsPrint, shownReading } from '../record/reading-shown.js';
 import { dateOrders } from '../time/date-orders.js';
 import type { CsvFile, CsvMeaning } from './csv-meaning.js';
 import { readUnder } from './csv-reading.js';
 import { energyColumns, movesOf } from './energy-registers.js';
 import { hasNegative } from './power-factor.js';
+import { ReadingRoom, type ShownUnder, shownUnder } from './shown-reading.js';
 
 /** What a file leaves open, with every answer there is. */
 type OpenPoints = { [Point in keyof CsvMeaning]: CsvMeaning[Point][] };
 
 type Point = keyof OpenPoints;
 
-/** What is kept of a reading under one of several meanings: its columns would take up as much memory as the file's own. */
-interface Attempt {
+/** What is kept of a reading under one of several meanings. */
+interface Attempt extends ShownUnder {
   meaning: CsvMeaning;
-  shown: QuestionReading;
-  /** equal where two readings make one record */
-  print: string;
 }
 
 /**
@@ -33,33 +30,35 @@ interface Attempt {
  */
 export function settleMeaning(file: CsvFile): ReadResult {
   const points = openPoints(file);
+  const room = new ReadingRoom();
   try {
-    return settledAmong(file, points);
+    return settledAmong(file, points, room);
   } catch (problem) {
     if (!(problem instanceof ConflictingRows)) throw problem;
-    return askWhichCounts(file, points, problem);
+    return askWhichCounts(file, points, { problem, room });
   }
 }
 
 /**
  * The first reading that a file can have, whatever else it can mean; for showing it beside others.
  * @param file what was read
- * @returns the record's columns, or why there are none
+ * @param room memory to read in
+ * @returns what is told of it, or why it can't be read
  */
-export function firstReading(file: CsvFile): ReadResult | InputProblem {
+export function firstReading(file: CsvFile, room: ReadingRoom): ShownUnder | InputProblem {
   try {
-    return firstAmong(file, openPoints(file));
+    return firstAmong(file, openPoints(file), room);
   } catch (problem) {
     if (problem instanceof InputProblem) return problem;
     throw problem;
   }
 }
 
-function firstAmong(file: CsvFile, points: OpenPoints): ReadResult {
+function firstAmong(file: CsvFile, points: OpenPoints, room: ReadingRoom): ShownUnder {
   let failure: unknown;
   for (const meaning of meanings({ ...points, keep: file.map.keepRow === undefined ? ['first'] : points.keep })) {
     try {
-      return readUnder(file, meaning);
+      return shownUnder(file, meaning, room);
     } catch (problem) {
       if (!(problem instanceof InputProblem)) throw problem;
       failure ??= problem;
@@ -69,9 +68,13 @@ function firstAmong(file: CsvFile, points: OpenPoints): ReadResult {
 }
 
 /** Rows that disagree are asked about, with the row that raises it, or refused where either answer gives one record. */
-function askWhichCounts(file: CsvFile, points: OpenPoints, problem: ConflictingRows): never {
+function askWhichCounts(
+  file: CsvFile,
+  points: OpenPoints,
+  { problem, room }: { problem: ConflictingRows; room: ReadingRoom },
+): never {
   try {
-    settledAmong(file, { ...points, keep: ['first', 'last'] });
+    settledAmong(file, { ...points, keep: ['first', 'last'] }, room);
   } catch (question) {
     if (question instanceof Question) throw new Question(question.questions, { row: problem.row });
   }
@@ -81,7 +84,7 @@ function askWhichCounts(file: CsvFile, points: OpenPoints, problem: ConflictingR
 function openPoints(file: CsvFile): OpenPoints {
   const { layout, reader, map } = file;
   const { mark } = reader;
-  const open = mark.openDots.length + mark.openCommas.length > 0;
+  const open = mark.openDots.count + mark.openCommas.count > 0;
   const decimal = mark.sign === null && open ? (['.', ','] as const) : [mark.sign];
   const order = dateOrders(reader.rows, map.dateOrder);
   return {
@@ -120,36 +123,34 @@ function factorSigns({ layout, reader, map }: CsvFile): PowerFactorSign[] {
   return factors.some((column) => hasNegative(reader.valuesOf(column))) ? [...POWER_FACTOR_SIGNS] : ['negativeLeads'];
 }
 
-function settledAmong(file: CsvFile, points: OpenPoints): ReadResult {
+function settledAmong(file: CsvFile, points: OpenPoints, room: ReadingRoom): ReadResult {
   const all = meanings(points);
-  const meaning = all.length === 1 ? all[0]! : settledMeaning(file, points, all);
+  const meaning = all.length === 1 ? all[0]! : settledMeaning(file, points, { all, room });
   // no other is looked at any more
-  const result = readUnder(file, meaning, true);
+  const result = readUnder(file, meaning, room.moments(file.reader.rows.count));
   return { ...result, notes: [...settledNotes(file, points, meaning), ...result.notes] };
 }
 
-/** The first meaning that can be, where the others that can be make the same record; each is read by itself. */
-function settledMeaning(file: CsvFile, points: OpenPoints, all: readonly CsvMeaning[]): CsvMeaning {
+/** The first meaning that can be, where the others that can be make the same record. */
+function settledMeaning(
+  file: CsvFile,
+  points: OpenPoints,
+  { all, room }: { all: readonly CsvMeaning[]; room: ReadingRoom },
+): CsvMeaning {
   const attempts: Attempt[] = [];
-  let failure: unknown;
   for (const meaning of all) {
     try {
-      attempts.push(attemptUnder(file, meaning));
+      attempts.push({ meaning, ...shownUnder(file, meaning, room) });
     } catch (problem) {
       if (!(problem instanceof InputProblem)) throw problem;
-      failure ??= problem;
     }
   }
   const [first] = attempts;
-  if (first === undefined) throw failure;
+  // none can be: the reading as a whole is refused with all its problems
+  if (first === undefined) return all[0]!;
   const questions = (Object.keys(points) as Point[]).flatMap((point) => asked(point, attempts));
   if (questions.length > 0) throw new Question(questions);
   return first.meaning;
-}
-
-function attemptUnder(file: CsvFile, meaning: CsvMeaning): Attempt {
-  const { columns } = readUnder(file, meaning);
-  return { meaning, shown: shownReading({}, columns), print: columnsPrint(columns) };
 }
 
 function meanings(points: OpenPoints): CsvMeaning[] {
@@ -170,7 +171,7 @@ function asked(point: Point, attempts: Attempt[]): QuestionAsked[] {
     if (!distinct.some(({ print }) => print === attempt.print)) distinct.push(attempt);
   }
   if (distinct.length < 2) return [];
-  const readings: QuestionReading[] = distinct.map(({ meaning, shown }) => ({ ...shown, map: mapOf(point, meaning) }));
+  const readings: QuestionReading[] = distinct.map(({ meaning, reading }) => reading(mapOf(point, meaning)));
   const { id, about } = ASKED[point];
   return [{ id, about, readings }];
 }
@@ -224,11 +225,11 @@ function mapOf(point: Point, meaning: CsvMeaning): MeterMap {
 
 function settledNotes({ reader, map }: CsvFile, points: OpenPoints, meaning: CsvMeaning): Remark[] {
   const { mark, rows } = reader;
-  const divided = meaning.decimal === ',' ? mark.openDots : meaning.decimal === '.' ? mark.openCommas : [];
+  const divided = meaning.decimal === ',' ? mark.openDots.count : meaning.decimal === '.' ? mark.openCommas.count : 0;
   const settledDates = (rows.dateForm === 'slashed' || rows.dateForm === 'short') && map.dateOrder === undefined;
   return [
     ...(meaning.decimal === ',' && map.decimal === undefined ? [note('decimal-mark-settled', { mark: ',' })] : []),
-    ...(divided.length > 0 ? [note('thousands-divided', { numbers: divided.length })] : []),
+    ...(divided > 0 ? [note('thousands-divided', { numbers: divided })] : []),
     ...(settledDates && points.order.length === 1 ? [note('date-order-settled', { order: meaning.order })] : []),
   ];
 }

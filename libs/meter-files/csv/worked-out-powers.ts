@@ -1,6 +1,5 @@
 import type { PowerFactorSign, VoltageBetween } from '#libs/contract/meter-map.js';
 import { InputProblem, type Problem } from '#libs/engine/index.js';
-import { hasNegative, scaleOf } from './power-factor.js';
 
 /** Columns in kW, kVA, V and A, one a phase where there are three; what the file lacks is null. */
 export interface MeasuredPowers {
@@ -19,9 +18,22 @@ export interface PowerRules {
   /** rows that count, and where each stands in the file */
   kept: Int32Array;
   rowNumber: Int32Array;
-  /** column of the apparent power and of the power factor, counted from 1; for messages */
+  /** nobody needs the columns afterwards, so that kW and kvar may take their place */
+  spare: boolean;
+  /** what the columns of the power factor show as a whole */
+  factor: FactorFacts | null;
+  /** what rounding may take from a kVA in each phase, where it has been found before [kVA] */
+  slackKva: readonly number[] | null;
+  /** column of the apparent power, counted from 1; for messages */
   apparentColumn: number;
-  factorColumn: number;
+}
+
+/** What columns of the power factor show as a whole. */
+export interface FactorFacts {
+  /** what they are divided by */
+  scale: 1 | 100;
+  /** of each, whether any of its numbers is below zero */
+  negative: readonly boolean[];
 }
 
 /** Powers worked out, one a row; NaN where a row does not give them. */
@@ -33,6 +45,8 @@ export interface WorkedOutPowers {
   unsigned: boolean;
   /** the power factor was written in percent */
   percent: boolean;
+  /** see PowerRules */
+  slackKva: readonly number[];
 }
 
 const MOST_PROBLEMS = 20;
@@ -43,18 +57,18 @@ const MOST_PROBLEMS = 20;
  * @param measured what the file holds
  * @param rules how it is understood
  * @returns kW and kvar
- * @throws InputProblem where a kVA is less than its kW, or a power factor is beyond 1, naming row and column
+ * @throws InputProblem where a kVA is less than its kW, naming row and column
  */
 export function workedOutPowers(measured: MeasuredPowers, rules: PowerRules): WorkedOutPowers {
-  const scale = measured.powerFactor === null ? 1 : scaleOf(measured.powerFactor, rules);
+  const { scale, negative } = rules.factor ?? { scale: 1, negative: [] };
   const phases = phasesOf(measured, rules, scale);
-  const rows = rules.rowNumber.length;
-  const total = { activeKw: new Float64Array(rows), reactiveKvar: new Float64Array(rows) };
-  const problems = phases.flatMap((phase) => shortRows(phase, rules)).slice(0, MOST_PROBLEMS);
+  const total = roomFor(phases, rules);
+  const slackKva = rules.slackKva ?? phases.map((phase) => slackOf(phase, rules));
+  const problems = phases.flatMap((phase, i) => shortRows(phase, slackKva[i]!, rules)).slice(0, MOST_PROBLEMS);
   if (problems.length > 0) throw new InputProblem(problems);
-  for (const phase of phases) addPhaseInto(total, phase, rules);
-  const negative = phases.some(({ lambda }) => lambda !== null && hasNegative(lambda));
-  return { ...total, unsigned: !negative || rules.sign === 'negativeExports', percent: scale !== 1 };
+  for (const [i, phase] of phases.entries()) addPhaseInto(total, phase, { ...rules, first: i === 0 });
+  const signed = phases.some(({ lambda }, phase) => lambda !== null && negative[phase]);
+  return { ...total, unsigned: !signed || rules.sign === 'negativeExports', percent: scale !== 1, slackKva };
 }
 
 /** Columns of one phase, or of all three together; without `s` there is `p`. */
@@ -64,17 +78,28 @@ interface PhaseColumns {
   lambda: Float64Array | null;
 }
 
+type Powers = Pick<WorkedOutPowers, 'activeKw' | 'reactiveKvar'>;
+
 function addPhaseInto(
-  total: { activeKw: Float64Array; reactiveKvar: Float64Array },
+  total: Powers,
   { p, s, lambda }: PhaseColumns,
-  { kept, sign }: PowerRules,
+  { kept, sign, first }: PowerRules & { first: boolean },
 ): void {
+  const { activeKw, reactiveKvar } = total;
   for (const row of kept) {
     const factor = lambda?.[row] ?? null;
     const { kw, kvar } = ofRow(p?.[row] ?? null, s?.[row] ?? null, factor);
-    total.activeKw[row]! += sign === 'negativeExports' && isNegative(factor) ? -Math.abs(kw) : kw;
-    total.reactiveKvar[row]! += leads(factor, sign) ? -kvar : kvar;
+    const exports = sign === 'negativeExports' && isNegative(factor);
+    activeKw[row] = (first ? 0 : activeKw[row]!) + (exports ? -Math.abs(kw) : kw);
+    reactiveKvar[row] = (first ? 0 : reactiveKvar[row]!) + (leads(factor, sign) ? -kvar : kvar);
   }
+}
+
+/** Columns for the powers: of a single phase the outermost of its own, where they may be written to. */
+function roomFor([phase, ...others]: readonly PhaseColumns[], { spare, rowNumber }: PowerRules): Powers {
+  const own = [phase!.p, phase!.s, phase!.lambda].filter((column) => column !== null);
+  if (spare && others.length === 0 && own.length > 1) return { activeKw: own[0]!, reactiveKvar: own.at(-1)! };
+  return { activeKw: new Float64Array(rowNumber.length), reactiveKvar: new Float64Array(rowNumber.length) };
 }
 
 function isNegative(factor: number | null): boolean {
@@ -101,11 +126,14 @@ function kvarAt(kw: number, size: number): number {
   return size === 0 ? Number.NaN : Math.abs(kw) * Math.sqrt(1 / (size * size) - 1);
 }
 
+function slackOf({ p, s }: PhaseColumns, { kept }: PowerRules): number {
+  return p === null || s === null ? 0 : stepOf(p, kept) + stepOf(s, kept);
+}
+
 /** Rows whose kVA are less than their kW by more than rounding can make them. */
-function shortRows({ p, s }: PhaseColumns, rules: PowerRules): Problem[] {
+function shortRows({ p, s }: PhaseColumns, slackKva: number, rules: PowerRules): Problem[] {
   if (p === null || s === null) return [];
-  const slack = stepOf(p, rules.kept) + stepOf(s, rules.kept);
-  const short = rules.kept.filter((row) => s[row]! < Math.abs(p[row]!) * (1 - 1e-9) - slack);
+  const short = rules.kept.filter((row) => s[row]! < Math.abs(p[row]!) * (1 - 1e-9) - slackKva);
   return Array.from(short.subarray(0, MOST_PROBLEMS), (row) => ({
     code: 'out-of-range' as const,
     row: rules.rowNumber[row]!,

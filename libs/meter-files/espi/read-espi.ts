@@ -2,19 +2,9 @@ import type { MeterBytes } from '../meter-bytes.js';
 import type { MeterReading, ReadOptions } from '../meter-format.js';
 import { readSeries } from '../reading-type/read-series.js';
 import { walkXml } from '../xml/walk-xml.js';
-import { xmlStart } from '../xml/xml-start.js';
 import { XmlText } from '../xml/xml-text.js';
 import { EspiFeed } from './espi-feed.js';
 import { joinFeed } from './join-feed.js';
-
-/**
- * Whether a file begins like a feed of usage data.
- * @param head the first bytes
- */
-export function isEspi(head: Uint8Array): boolean {
-  const start = xmlStart(head);
-  return /naesb\.org\/espi/i.test(start) || /<(?:[\w.-]+:)?(?:IntervalBlock|UsagePoint)[\s/>]/.test(start);
-}
 
 /**
  * Reads an ESPI (Green Button) feed. Its times are seconds since 1970 in UTC, whatever zone is said.

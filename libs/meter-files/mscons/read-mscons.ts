@@ -14,15 +14,6 @@ import { type MessageChannel, MessageValues } from './message-values.js';
 const DAY_S = 86_400;
 
 /**
- * Whether a file begins like an interchange with meter messages.
- * @param head the first bytes
- */
-export function isMscons(head: Uint8Array): boolean {
-  const start = new TextDecoder('latin1').decode(head.subarray(0, 2000)).trimStart();
-  return /^UN[AB]/.test(start) && /UNH.{1,60}MSCONS/s.test(start);
-}
-
-/**
  * Reads MSCONS messages: values by metering point and identification code, their times as the messages state them.
  * Rows of a refusal are segments, counted from 1 with the service string advice.
  * @param source the file

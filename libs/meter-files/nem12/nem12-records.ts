@@ -2,7 +2,6 @@ import { shown } from '#libs/contract/shown.js';
 import { dayNumber, InputProblem, type Problem } from '#libs/engine/index.js';
 import { type NumberCell, readNumberText } from '../csv/number-cell.js';
 import type { RowCells } from '../csv/row-cells.js';
-import { decodeText } from '../csv/row-cells.js';
 import { type ReadUnit, readUnit } from '../csv/unit-text.js';
 import type { Quantity } from '../record/build-columns.js';
 import { isDate } from '../time/date-orders.js';
@@ -36,15 +35,6 @@ export interface StreamDay {
   substituted: number;
   /** values whose quality is stated nowhere */
   unstated: number;
-}
-
-/**
- * Whether a file begins like NEM12 (or its sister NEM13, which is then refused by name).
- * @param head the first bytes
- */
-export function isNem12(head: Uint8Array): boolean {
-  const start = decodeText(head.subarray(0, 400)).trimStart();
-  return /^"?100"?,"?NEM1[23]\b/i.test(start) || /^200,[^,\r\n]*,[^,\r\n]*,[^,\r\n]*,[A-Z]\w?,/i.test(start);
 }
 
 /**

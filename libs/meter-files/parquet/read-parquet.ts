@@ -11,20 +11,11 @@ import { PageError } from './page-error.js';
 import { type Footer, type NamedColumn, rangeOf, readFooter } from './parquet-footer.js';
 import { type ValueText, valueText } from './value-text.js';
 
-const STARTS = ['PAR1', 'PARE'];
 const SPOOL_SHARE = 0.2;
 /** Rows from a few bytes can be many: so much text is the most that is made of a file [bytes]. */
 const MOST_TEXT_BYTES = 2_147_483_648;
 /** The names are row 1, as in a sheet. */
 const HEADER_ROW = 1;
-
-/**
- * Whether a file is Parquet.
- * @param head its first bytes
- */
-export function isParquet(head: Uint8Array): boolean {
-  return STARTS.includes(Buffer.from(head.subarray(0, 4)).toString('latin1'));
-}
 
 /**
  * Reads Parquet: its named columns as rows of a sheet, the names being row 1, one row group after the other.

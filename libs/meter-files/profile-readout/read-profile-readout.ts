@@ -15,14 +15,6 @@ import type { ProfileColumn, ProfileHeader } from './profile-header.js';
 import { ProfileStretches, type Readout, type Stretch } from './profile-stretches.js';
 
 /**
- * Whether a file holds a load profile as meters send it.
- * @param head the first bytes
- */
-export function isProfileReadout(head: Uint8Array): boolean {
-  return /(?:^|[^A-Za-z0-9.])P\.0[12]\(\d{10,13}\)\(/.test(new TextDecoder('latin1').decode(head));
-}
-
-/**
  * Reads load profiles P.01 and P.02 out of a meter's read-out. A head gives the end of its first interval, the status,
  * the length and the columns; every head that follows a gap or an event begins a new stretch.
  * @param source the file

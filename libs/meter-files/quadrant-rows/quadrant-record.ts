@@ -1,14 +1,14 @@
 import type { MeterMap } from '#libs/contract/meter-map.js';
 import { zoneTable } from '#libs/contract/time-zone.js';
 import { InputProblem, type Remark } from '#libs/engine/index.js';
-import { valuesUnder } from '../csv/csv-sources.js';
+import { valuesUnder } from '../csv/raw-columns.js';
 import type { DecimalSign } from '../csv/decimal-mark.js';
 import { readUnit } from '../csv/unit-text.js';
 import type { ReadOptions } from '../meter-format.js';
 import { note } from '../note.js';
 import { buildColumns, type Quantity, type QuantitySource } from '../record/build-columns.js';
 import type { ReadResult } from '../record/close-reading.js';
-import { gridRows, type IntervalGrid } from '../record/interval-grid.js';
+import { gridRows, type IntervalGrid, sameIn } from '../record/interval-grid.js';
 import { RowProblems } from '../row-problems.js';
 import { clockTimes, orderRows } from '../time/clock-times.js';
 import { type Moments, showsEnds } from '../time/moments.js';
@@ -105,7 +105,7 @@ function placedRows(
   const utcS = seasonMoments({ clock, summer: values[FLAG]!, rowNumber }, season);
   const moments: Moments = { utcS, clockAt: (row) => clock[row]!, newestFirst, zone: season.table, notes };
   const energies = values.slice(0, FLAG);
-  const grid = gridRows({ utcS, rowNumber, values: energies, spanS: Number.NaN }, keep);
+  const grid = gridRows({ utcS, rowNumber, agree: sameIn(energies), spanS: Number.NaN }, keep);
   const bounds = { first: grid.kept[0]!, last: grid.kept.at(-1)!, intervalS: grid.intervalS };
   const because = map.stamp === undefined ? showsEnds(rows, moments, bounds) : null;
   return { moments, grid, ends: map.stamp === 'end' || because !== null, because };

@@ -52,7 +52,7 @@ interface Attempt {
 function settled(reader: QuadrantReader, options: ReadOptions): ReadResult {
   const map = options.map ?? {};
   const { mark } = reader;
-  const open = mark.sign === null && mark.openDots.length + mark.openCommas.length > 0;
+  const open = mark.sign === null && mark.openDots.count + mark.openCommas.count > 0;
   const decimals: (DecimalSign | null)[] = open ? ['.', ','] : [mark.sign];
   const orders = dateOrders(reader.rows, map.dateOrder);
   const meanings = decimals.flatMap((decimal) => orders.map((order) => ({ decimal, order })));

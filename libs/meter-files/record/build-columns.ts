@@ -50,6 +50,10 @@ export interface OrderedRows {
   utcS: Float64Array;
   shiftS: number;
   rowNumber: Int32Array;
+  /** whether nobody needs the moments afterwards, so that they may be turned into the record's own in place */
+  spare?: boolean;
+  /** where columns come from, all 0 */
+  fresh?: (length: number) => Float64Array;
 }
 
 /** Columns, and what was left out of them. */
@@ -83,13 +87,14 @@ export function buildColumns(
   const sourceOf = (quantity: Quantity) => sources.find((source) => source.quantity === quantity);
   const of = (quantity: Quantity) => taken(rows, valid, sourceOf(quantity));
   const exported = of('exported');
-  const imported = of('active') ?? new Float64Array(n);
+  const fresh = freshOf(rows);
+  const imported = of('active') ?? fresh(n);
   if (exported !== null) for (let i = 0; i < n; i++) exported[i] = imported[i]! - exported[i]!;
   const activeKw = exported ?? imported;
   const signed = of('reactive');
   const isSpare = signed !== null && isOwn(signed, sourceOf('reactive')!);
-  const lagging = isSpare ? signed : ((signed === null ? of('lagging') : null) ?? new Float64Array(n));
-  const leading = (signed === null ? of('leading') : null) ?? new Float64Array(n);
+  const lagging = isSpare ? signed : ((signed === null ? of('lagging') : null) ?? fresh(n));
+  const leading = (signed === null ? of('leading') : null) ?? fresh(n);
   const negativeReactive = signed === null ? 0 : split(signed, lagging, leading, leadingPositive);
   const standby = of('standby');
   const columns: RecordColumns = {
@@ -103,6 +108,10 @@ export function buildColumns(
     standby: standby === null ? null : Uint8Array.from(standby),
   };
   return { columns, withoutValue: rows.kept.length - n, negativeReactive };
+}
+
+function freshOf({ fresh }: OrderedRows): (length: number) => Float64Array {
+  return fresh ?? ((length) => new Float64Array(length));
 }
 
 function validRows(kept: Int32Array, sources: readonly QuantitySource[]): Int32Array {
@@ -124,22 +133,38 @@ function hasGap(kept: Int32Array, values: Float64Array): boolean {
   return false;
 }
 
-function beginnings({ utcS, shiftS }: OrderedRows, valid: Int32Array): Float64Array {
-  if (shiftS === 0) return picked(utcS, valid);
-  const beginS = new Float64Array(valid.length);
-  for (let i = 0; i < valid.length; i++) beginS[i] = utcS[valid[i]!]! - shiftS;
+function beginnings(rows: OrderedRows, valid: Int32Array): Float64Array {
+  const { utcS, shiftS, spare = false } = rows;
+  const moments = picked(rows, { values: utcS, spare }, valid);
+  if (shiftS === 0) return moments;
+  const beginS = spare || moments !== utcS ? moments : freshOf(rows)(valid.length);
+  for (let i = 0; i < valid.length; i++) beginS[i] = moments[i]! - shiftS;
   return beginS;
 }
 
 /** More room than this behind the values of a column is not worth keeping for the sake of a copy saved. */
 const MOST_ROOM = 1.1;
 
-/** The values of the valid rows: the column itself where every row is, since nobody writes to it any more. */
-function picked(values: Float64Array, valid: Int32Array): Float64Array {
-  if (values.buffer.byteLength <= MOST_ROOM * values.byteLength && isEveryRow(valid, values.length)) return values;
-  const column = new Float64Array(valid.length);
+/**
+ * The values of the valid rows: the column itself where every row is, since nobody writes to it any more, and its own
+ * beginning where nobody needs the rest.
+ */
+function picked(
+  rows: OrderedRows,
+  { values, spare = false }: Pick<QuantitySource, 'values' | 'spare'>,
+  valid: Int32Array,
+): Float64Array {
+  const fits = values.buffer.byteLength <= MOST_ROOM * valid.length * values.BYTES_PER_ELEMENT;
+  if (fits && isEveryRow(valid, values.length)) return values;
+  const column = fits && spare && isAscending(valid) ? values.subarray(0, valid.length) : freshOf(rows)(valid.length);
   for (let i = 0; i < valid.length; i++) column[i] = values[valid[i]!]!;
   return column;
+}
+
+/** Then each value is taken from where it goes or from behind it. */
+function isAscending(rows: Int32Array): boolean {
+  for (let i = 1; i < rows.length; i++) if (rows[i]! < rows[i - 1]!) return false;
+  return true;
 }
 
 function isEveryRow(valid: Int32Array, rows: number): boolean {
@@ -150,16 +175,16 @@ function isEveryRow(valid: Int32Array, rows: number): boolean {
 
 function taken(rows: OrderedRows, valid: Int32Array, source: QuantitySource | undefined): Float64Array | null {
   if (source === undefined) return null;
-  const { values, times, over, energy, quantity } = source;
+  const { times, over, energy, quantity } = source;
   const { intervalS } = rows;
-  const whole = picked(values, valid);
+  const whole = picked(rows, source, valid);
   const own = isOwn(whole, source);
   // what is exported is written to
   if (times === 1 && over === 1 && !energy && (own || quantity !== 'exported')) return whole;
   // kW = kWh · 3600 ÷ intervalS
   const hourS = energy ? 3600 : 1;
   const lengthS = energy ? intervalS : 1;
-  const column = own ? whole : new Float64Array(valid.length);
+  const column = own ? whole : freshOf(rows)(valid.length);
   for (let i = 0; i < column.length; i++) column[i] = (((whole[i]! * times) / over) * hourS) / lengthS;
   return column;
 }

@@ -1,10 +1,15 @@
 import { describe, expect, it } from 'vitest';
-import { ConflictingRows, gridRows } from './interval-grid.js';
+import { ConflictingRows, gridRows, sameIn } from './interval-grid.js';
 
 function grid(utcS: number[], options: { values?: number[]; keep?: 'first' | 'last'; spanS?: number } = {}) {
   const values = Float64Array.from(options.values ?? utcS.map(() => 1));
   const rowNumber = Int32Array.from(utcS, (_, i) => i + 2);
-  const rows = { utcS: Float64Array.from(utcS), rowNumber, values: [values], spanS: options.spanS ?? Number.NaN };
+  const rows = {
+    utcS: Float64Array.from(utcS),
+    rowNumber,
+    agree: sameIn([values]),
+    spanS: options.spanS ?? Number.NaN,
+  };
   const found = gridRows(rows, options.keep);
   return { ...found, kept: Array.from(found.kept) };
 }

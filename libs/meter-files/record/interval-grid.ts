@@ -7,8 +7,8 @@ export interface MomentRows {
   /** UTC, one a row [s]; rows without a moment (NaN) are left out */
   utcS: Float64Array;
   rowNumber: Int32Array;
-  /** columns that have to agree where two rows share a moment */
-  values: readonly Float64Array[];
+  /** whether two rows that share a moment say the same */
+  agree: (a: number, b: number) => boolean;
   /** length of the interval where the file states it [s]; NaN where it has to be found */
   spanS: number;
   /** room that nobody needs any more, for the order of the rows */
@@ -18,8 +18,10 @@ export interface MomentRows {
 /** The rows of a record in time order, one a moment. */
 export interface IntervalGrid {
   intervalS: number;
-  /** rows that stay, in time order */
-  kept: Int32Array;
+  /** rows that stay, in time order; listed when they are first asked for */
+  readonly kept: Int32Array;
+  /** all rows stay, as they stand */
+  isEveryRow: boolean;
   /** rows dropped because another of the same moment says the same */
   duplicates: number;
   /** rows dropped because a row of the same moment was chosen before them */
@@ -56,17 +58,26 @@ export class ConflictingRows extends InputProblem {
  */
 export function gridRows(rows: MomentRows, keep: 'first' | 'last' | undefined): IntervalGrid {
   if (isRegular(rows.utcS, rows.spanS)) {
-    const n = rows.utcS.length;
-    const kept = rows.spare?.subarray(0, n) ?? new Int32Array(n);
-    for (let i = 0; i < kept.length; i++) kept[i] = i;
-    return { intervalS: rows.utcS[1]! - rows.utcS[0]!, kept, duplicates: 0, overruled: 0, misplaced: 0 };
+    const { utcS, spare } = rows;
+    let listed: Int32Array | undefined;
+    return {
+      intervalS: utcS[1]! - utcS[0]!,
+      get kept() {
+        listed ??= everyRow(spare?.subarray(0, utcS.length) ?? new Int32Array(utcS.length));
+        return listed;
+      },
+      isEveryRow: true,
+      duplicates: 0,
+      overruled: 0,
+      misplaced: 0,
+    };
   }
   const { order, misplaced } = timeOrder(rows.utcS);
   const { kept, duplicates, overruled } = oneAMoment(rows, order, keep);
   const intervalS = Number.isNaN(rows.spanS) ? shownStepS(rows.utcS, kept) : rows.spanS;
   refuseOffGrid(rows, kept, intervalS);
   if (Number.isNaN(rows.spanS)) refuseSecondInterval(rows, kept, intervalS);
-  return { intervalS, kept, duplicates, overruled, misplaced };
+  return { intervalS, kept, isEveryRow: false, duplicates, overruled, misplaced };
 }
 
 /** Most files: every row one interval after the row before it. */
@@ -75,6 +86,11 @@ function isRegular(utcS: Float64Array, spanS: number): boolean {
   if (!(stepS > 0) || (spanS !== stepS && !Number.isNaN(spanS))) return false;
   for (let i = 1; i < utcS.length; i++) if (utcS[i]! - utcS[i - 1]! !== stepS) return false;
   return true;
+}
+
+function everyRow(rows: Int32Array): Int32Array {
+  for (let i = 0; i < rows.length; i++) rows[i] = i;
+  return rows;
 }
 
 function timeOrder(utcS: Float64Array): { order: Int32Array; misplaced: number } {
@@ -97,37 +113,66 @@ function stepsBack(utcS: Float64Array, order: Int32Array): number {
   return back;
 }
 
+/** Keeps the rows that stay, in the place of `order`: what is written lies before what is read. */
 function oneAMoment(rows: MomentRows, order: Int32Array, keep: 'first' | 'last' | undefined) {
   const { utcS, rowNumber } = rows;
-  const kept = new Int32Array(order.length);
+  const conflicts = new Conflicts(rowNumber);
   let count = 0;
   let duplicates = 0;
-  const conflicts: [number, number][] = [];
   for (const row of order) {
-    const earlier = count > 0 ? kept[count - 1]! : -1;
+    const earlier = count > 0 ? order[count - 1]! : -1;
     if (earlier < 0 || utcS[earlier] !== utcS[row]) {
-      kept[count++] = row;
+      order[count++] = row;
       continue;
     }
-    if (sameValues(rows.values, earlier, row)) duplicates++;
-    else conflicts.push(rowNumber[earlier]! < rowNumber[row]! ? [row, earlier] : [earlier, row]);
+    if (rows.agree(earlier, row)) duplicates++;
+    else conflicts.add(earlier, row);
     const later = rowNumber[row]! > rowNumber[earlier]!;
-    if (later === (keep === 'last')) kept[count - 1] = row;
+    if (later === (keep === 'last')) order[count - 1] = row;
   }
-  if (conflicts.length > 0 && keep === undefined) refuseConflict(rowNumber, conflicts);
-  return { kept: kept.subarray(0, count), duplicates, overruled: conflicts.length };
+  if (keep === undefined) conflicts.refuse();
+  return { kept: order.subarray(0, count), duplicates, overruled: conflicts.count };
 }
 
-function refuseConflict(rowNumber: Int32Array, conflicts: [number, number][]): never {
-  const [row, earlier] = conflicts.reduce((a, b) => (rowNumber[b[0]]! < rowNumber[a[0]]! ? b : a));
-  throw new ConflictingRows(rowNumber[row]!, rowNumber[earlier]!, conflicts.length);
+/** Rows of one moment that disagree: how many, and which comes first in the file. */
+class Conflicts {
+  count = 0;
+  #row = Number.POSITIVE_INFINITY;
+  #earlier = 0;
+  readonly #rowNumber: Int32Array;
+
+  constructor(rowNumber: Int32Array) {
+    this.#rowNumber = rowNumber;
+  }
+
+  add(a: number, b: number): void {
+    this.count++;
+    const [one, other] = [this.#rowNumber[a]!, this.#rowNumber[b]!];
+    if (Math.max(one, other) >= this.#row) return;
+    this.#row = Math.max(one, other);
+    this.#earlier = Math.min(one, other);
+  }
+
+  refuse(): void {
+    if (this.count > 0) throw new ConflictingRows(this.#row, this.#earlier, this.count);
+  }
 }
 
-function sameValues(values: readonly Float64Array[], a: number, b: number): boolean {
-  for (const column of values) {
-    if (column[a] !== column[b] && !(Number.isNaN(column[a]!) && Number.isNaN(column[b]!))) return false;
-  }
-  return true;
+/**
+ * Whether two rows hold the same in every column; a missing value is like another.
+ * @param values columns
+ */
+export function sameIn(values: readonly Float64Array[]): MomentRows['agree'] {
+  return (a, b) => values.every((column) => isSame(column[a]!, column[b]!));
+}
+
+/**
+ * Whether two values are the same, or both missing.
+ * @param a one
+ * @param b other
+ */
+export function isSame(a: number, b: number): boolean {
+  return a === b || (Number.isNaN(a) && Number.isNaN(b));
 }
 
 function shownStepS(utcS: Float64Array, kept: Int32Array): number {

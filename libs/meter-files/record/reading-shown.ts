@@ -4,27 +4,97 @@ import type { QuestionReading } from '#libs/contract/question.js';
 import type { RecordColumns } from './build-columns.js';
 
 const SHOWN_ROWS = 3;
+const PRINTED_AT_ONCE = 8192;
+const PRINTED = [
+  'beginS',
+  'activeKw',
+  'laggingKvar',
+  'leadingKvar',
+  'voltageV',
+  'connectedKvar',
+  'standby',
+] as const satisfies (keyof RecordColumns)[];
+
+/** What a question tells of a reading, gathered part by part, so that its columns need not be held. */
+export class ReadingShown {
+  #maxKw = Number.NaN;
+  #sumKw = 0;
+  #intervalS = 0;
+  readonly #firstRows: string[][] = [];
+
+  /**
+   * Takes further intervals.
+   * @param columns of the intervals that follow those before
+   */
+  take(columns: RecordColumns): void {
+    const { intervalS, beginS, activeKw, laggingKvar, leadingKvar } = columns;
+    this.#intervalS = intervalS;
+    for (const kw of activeKw) {
+      if (!(kw <= this.#maxKw)) this.#maxKw = kw;
+      this.#sumKw += Math.max(kw, 0);
+    }
+    for (let i = 0; i < beginS.length && this.#firstRows.length < SHOWN_ROWS; i++) {
+      const powers = [activeKw, laggingKvar, leadingKvar].map((column) => String(column[i]));
+      this.#firstRows.push([utcStamp(beginS[i]!), ...powers]);
+    }
+  }
+
+  /**
+   * Greatest kW, imported kWh and the first intervals in UTC, kW, lagging and leading kvar.
+   * @param map what settles it this way
+   */
+  reading(map: MeterMap): QuestionReading {
+    const maxKw = Number.isNaN(this.#maxKw) ? 0 : this.#maxKw;
+    return { map, maxKw, activeKwh: (this.#sumKw * this.#intervalS) / 3600, firstRows: this.#firstRows };
+  }
+}
+
+/** A print of a reading's columns, gathered part by part, whichever parts they come in. */
+export class ColumnsPrint {
+  #intervalS = 0;
+  readonly #prints = PRINTED.map(() => createHash('sha256'));
+  readonly #absent = new Set<string>();
+  readonly #part = new Float64Array(PRINTED_AT_ONCE);
+
+  /**
+   * Takes further intervals.
+   * @param columns of the intervals that follow those before
+   */
+  take(columns: RecordColumns): void {
+    this.#intervalS = columns.intervalS;
+    for (const [k, name] of PRINTED.entries()) this.#printColumn(k, columns[name]);
+  }
+
+  /** Equal where two readings make one record, and as good as never elsewhere; asked for once, at the end. */
+  text(): string {
+    const prints = PRINTED.map((name, k) => (this.#absent.has(name) ? 'none' : this.#prints[k]!.digest('hex')));
+    return [this.#intervalS, ...prints].join(' ');
+  }
+
+  #printColumn(k: number, column: Float64Array | Uint8Array | null): void {
+    if (column === null) {
+      this.#absent.add(PRINTED[k]!);
+      return;
+    }
+    const part = this.#part;
+    for (let from = 0; from < column.length; from += PRINTED_AT_ONCE) {
+      const count = Math.min(PRINTED_AT_ONCE, column.length - from);
+      // adding 0 makes 0 of −0, which is the same number
+      for (let i = 0; i < count; i++) part[i] = column[from + i]! + 0;
+      this.#prints[k]!.update(part.subarray(0, count));
+    }
+  }
+}
 
 /**
- * A reading as a question shows it: greatest kW, imported kWh and the first intervals in UTC, kW, lagging and leading kvar.
+ * A reading as a question shows it, see ReadingShown.
  * @param map what settles it this way
  * @param columns what would come of it
  */
 export function shownReading(map: MeterMap, columns: RecordColumns): QuestionReading {
-  const { intervalS, beginS, activeKw, laggingKvar, leadingKvar } = columns;
-  let maxKw = activeKw[0] ?? 0;
-  let sumKw = 0;
-  for (const kw of activeKw) {
-    if (kw > maxKw) maxKw = kw;
-    sumKw += Math.max(kw, 0);
-  }
-  const firstRows = Array.from(beginS.subarray(0, SHOWN_ROWS), (momentS, i) => [
-    utcStamp(momentS),
-    String(activeKw[i]),
-    String(laggingKvar[i]),
-    String(leadingKvar[i]),
-  ]);
-  return { map, maxKw, activeKwh: (sumKw * intervalS) / 3600, firstRows };
+  const shown = new ReadingShown();
+  shown.take(columns);
+  return shown.reading(map);
 }
 
 /**
@@ -59,28 +129,4 @@ function same(a: Float64Array | Uint8Array | null, b: Float64Array | Uint8Array 
   if (a.length !== b.length) return false;
   for (let i = 0; i < a.length; i++) if (a[i] !== b[i]) return false;
   return true;
-}
-
-const PRINTED_AT_ONCE = 8192;
-
-/**
- * A print of a reading's columns, equal where two readings make one record and as good as never elsewhere.
- * @param columns of the reading
- */
-export function columnsPrint(columns: RecordColumns): string {
-  const hash = createHash('sha256');
-  const { intervalS, beginS, activeKw, laggingKvar, leadingKvar, voltageV, connectedKvar, standby } = columns;
-  hash.update(`${intervalS}`);
-  const part = new Float64Array(PRINTED_AT_ONCE);
-  for (const column of [beginS, activeKw, laggingKvar, leadingKvar, voltageV, connectedKvar, standby]) {
-    hash.update(column === null ? 'none' : `${column.length}`);
-    if (column === null) continue;
-    for (let from = 0; from < column.length; from += PRINTED_AT_ONCE) {
-      const count = Math.min(PRINTED_AT_ONCE, column.length - from);
-      // adding 0 makes 0 of −0, which is the same number
-      for (let i = 0; i < count; i++) part[i] = column[from + i]! + 0;
-      hash.update(part.subarray(0, count));
-    }
-  }
-  return hash.digest('hex');
 }

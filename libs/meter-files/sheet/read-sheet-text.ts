@@ -1,6 +1,7 @@
 import type { MeterMap } from '#libs/contract/meter-map.js';
 import { InputProblem, type Remark } from '#libs/engine/index.js';
 import { readCsv } from '../csv/read-csv.js';
+import { isKeptRecord, KEPT_FORMAT, readKeptRecord } from '../kept-record/read-kept-record.js';
 import { MeterBytes } from '../meter-bytes.js';
 import type { MeterReading, ReadOptions } from '../meter-format.js';
 
@@ -18,6 +19,7 @@ export async function readSheetText(
 ): Promise<MeterReading> {
   const source = await MeterBytes.open(text);
   try {
+    if (isKeptRecord(source.head)) return await readKeptRecord(source);
     return await readCsv(source, { ...options, map: { ...map, separator: ',' } });
   } finally {
     await source.close();
@@ -32,6 +34,7 @@ export async function readSheetText(
  */
 export function readingOf(reading: MeterReading, format: string, notes: readonly Remark[]): MeterReading {
   const { record, quality } = reading;
+  if (quality.format === KEPT_FORMAT) return reading;
   const own = record.notes.map((entry) =>
     entry.code === 'file-read-as' ? { ...entry, values: { ...entry.values, format } } : entry,
   );

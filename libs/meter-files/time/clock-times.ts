@@ -9,11 +9,12 @@ const DAY_S = 86_400;
  * The clock times of the rows as they are written, in seconds since 1970-01-01 00:00 by the same clock.
  * @param rows stamps in parts, in file order
  * @param order of the parts of a date
+ * @param room takes the times, if it is given
  * @returns one time a row [s]
  * @throws InputProblem naming the row of a date that does not exist
  */
-export function clockTimes(rows: StampedRows, order: DateOrder): Float64Array {
-  const clock = new Float64Array(rows.count);
+export function clockTimes(rows: StampedRows, order: DateOrder, room?: Float64Array): Float64Array {
+  const clock = room?.subarray(0, rows.count) ?? new Float64Array(rows.count);
   let known = -1;
   let dayS = 0;
   for (let i = 0; i < rows.count; i++) {

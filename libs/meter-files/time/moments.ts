@@ -21,6 +21,8 @@ export interface StampRules {
   zoneFromHeader: boolean;
   /** clock times are the time passed since midnight, whatever the clock did */
   elapsed: boolean;
+  /** takes the moments, where rows are read more than once */
+  room?: Float64Array;
 }
 
 /** Moments of the rows, before it is known how long an interval is. */
@@ -44,7 +46,7 @@ export interface Moments {
  * @throws InputProblem where a stamp can't be
  */
 export function momentsOf(rows: StampedRows, rules: StampRules, ends: boolean): Moments {
-  const clock = clockTimes(rows, rules.order);
+  const clock = clockTimes(rows, rules.order, rules.room);
   if (rows.offsetS !== null) return ownMoments(clock, rows.offsetS);
   const zone = zoneOver(rules.zone ?? 'UTC', clock);
   const notes: Remark[] = [];

@@ -34,7 +34,7 @@ export async function readSheet(
     const rows = new SheetRows(cells, pathOf(sheet));
     try {
       // the numbers of a sheet have no mark of their own; what the map says of marks is said of texts
-      const text = textOf(workbook, sheet, { rows, onRead });
+      const text = sheetText(workbook, sheet, { rows, onRead });
       return await readSheetText(text, workbook.options, markless ? map : { ...map, decimal: '.' });
     } catch (error) {
       throw error instanceof InputProblem ? ofSheet(error, sheet, cells.uncalculated) : error;
@@ -42,7 +42,8 @@ export async function readSheet(
   });
 }
 
-async function* textOf(
+/** Rows of a sheet as comma-delimited text, as they are read. */
+export async function* sheetText(
   { archive, options }: OpenWorkbook,
   { part }: Worksheet,
   { rows, onRead }: { rows: SheetRows; onRead: (bytes: number) => void },

@@ -1,5 +1,6 @@
 import { shown } from '#libs/contract/shown.js';
 import { InputProblem, type Remark } from '#libs/engine/index.js';
+import { isCompound } from '../format-starts.js';
 import type { MeterBytes } from '../meter-bytes.js';
 import type { MeterReading, ReadOptions } from '../meter-format.js';
 import { note } from '../note.js';
@@ -13,20 +14,8 @@ import { readWorkbook, type Workbook, type Worksheet } from './workbook-parts.js
 import { readXml } from './xml-part.js';
 import { ZipArchive } from './zip-archive.js';
 
-const ZIP = [0x50, 0x4b, 0x03, 0x04];
-const EMPTY_ZIP = [0x50, 0x4b, 0x05, 0x06];
-/** A compound file: a workbook of the older format, or an .xlsx with a password. */
-const COMPOUND = [0xd0, 0xcf, 0x11, 0xe0];
 /** Spooling is a small part of the work. */
 const SPOOL_SHARE = 0.05;
-
-/**
- * Whether a file is a workbook, or something that only looks like one.
- * @param head its first bytes
- */
-export function isXlsx(head: Uint8Array): boolean {
-  return [ZIP, EMPTY_ZIP, COMPOUND].some((start) => begins(head, start));
-}
 
 /**
  * Reads a workbook: every sheet row by row, the sheet that holds the record chosen.
@@ -73,7 +62,8 @@ async function attemptAt(open: OpenWorkbook, sheet: Worksheet, onRead: (bytes: n
   }
 }
 
-async function contextOf(archive: ZipArchive, { strings, styles, since1904 }: Workbook) {
+/** What the cells of a workbook are read by: its shared texts and the styles of its numbers. */
+export async function contextOf(archive: ZipArchive, { strings, styles, since1904 }: Workbook) {
   const shared = new SharedStrings(strings ?? '');
   const formats = new CellStyles(styles ?? '');
   if (strings !== null) await readXml(strings, archive.part(strings), shared);
@@ -118,13 +108,9 @@ function namesOf(sheets: readonly Worksheet[]): string {
   return names.length > 300 ? `${names.slice(0, 300)}…` : names;
 }
 
-function begins(head: Uint8Array, start: readonly number[]): boolean {
-  return start.every((byte, index) => head[index] === byte);
-}
-
 /** The directory of a compound file names the stream of an encrypted package in UTF-16 (MS-OFFCRYPTO, 2.3.4.4). */
 function refuseCompound(head: Uint8Array): void {
-  if (!begins(head, COMPOUND)) return;
+  if (!isCompound(head)) return;
   const encrypted = Buffer.from(head).includes(Buffer.from('EncryptedPackage', 'utf16le'));
   const found = encrypted ? 'a workbook with a password' : 'a workbook with a password or of the older format (.xls)';
   throw new InputProblem([

@@ -1,0 +1,44 @@
+import type { ProposalFrame } from '#libs/proposal/proposal-frame.js';
+import { Job } from '#libs/store/job.js';
+import type { Revision } from '#libs/store/revision.js';
+import type { Store } from '#libs/store/store.js';
+import type { FrozenPlan } from './plan-request.js';
+import { revisionHistory } from './revision-history.js';
+
+/** What a paper says of the revision it is of. */
+export type Framed = Pick<
+  Revision,
+  'siteId' | 'number' | 'revision' | 'author' | 'reason' | 'contentHash' | 'recordHash' | 'engineVersion' | 'createdAt'
+>;
+
+/**
+ * The frame of a revision's draft: number, hashes, reason and date, and the revisions before it.
+ * @param store the store
+ * @param revision stored, or about to be
+ */
+export async function frameOf(store: Store, framed: Framed): Promise<ProposalFrame> {
+  const { siteId, number, revision, author, reason, contentHash, recordHash, engineVersion, createdAt } = framed;
+  return {
+    ...{ number, revision, state: 'draft, not reviewed', preparedBy: author, contentHash, recordHash, engineVersion },
+    ...{ reason, date: createdAt.toISOString().slice(0, 10) },
+    history: await revisionHistory(store, siteId, revision),
+  };
+}
+
+/** Sheet and logo, where they were asked for. */
+export function sheetOf({ paper, logo }: Pick<FrozenPlan, 'paper' | 'logo'>): Pick<ProposalFrame, 'paper' | 'logo'> {
+  return {
+    ...(paper === undefined ? {} : { paper }),
+    ...(logo === undefined ? {} : { logo: new Uint8Array(Buffer.from(logo, 'base64')) }),
+  };
+}
+
+/** Sheet and logo a stored revision was asked for with. */
+export async function sheetOfRevision(
+  store: Store,
+  { siteId, revision, contentHash }: Revision,
+): Promise<Pick<ProposalFrame, 'paper' | 'logo'>> {
+  const made = { siteId, revision, inputHash: contentHash };
+  const job = await store.read((manager) => manager.findOne(Job, { where: made, order: { id: 'ASC' } }));
+  return job === null ? {} : sheetOf(job.request as FrozenPlan);
+}

@@ -1,0 +1,10 @@
+import { GAP } from './format-number.js';
+
+/**
+ * How a group of stages is told of.
+ * @param group entry of `bank.stages`, from 0
+ * @returns "group 1"
+ */
+export function groupName(group: number): string {
+  return `group${GAP}${group + 1}`;
+}

@@ -1,0 +1,54 @@
+import type { MeasuredCheck } from '#libs/engine/index.js';
+import { formatNumber, formatQuantity, formatRange } from './format-number.js';
+
+/** Heads over the cells of `measuredRows`. */
+export const MEASURED_HEADS = [
+  'order',
+  'quantity',
+  'measured',
+  'computed',
+  'over all corners',
+  'difference',
+  'stands',
+] as const;
+
+/**
+ * How a measurement stands against the model, in a few words.
+ * @param measured of the result, with at least one row
+ * @returns without a full stop
+ */
+export function measuredFinding({ rows }: MeasuredCheck): string {
+  const off = rows.filter(({ standing }) => standing !== 'within').length;
+  return off === 0
+    ? 'every reading lies within the model’s corners'
+    : `${off} readings lie outside the model’s corners`;
+}
+
+/**
+ * What has to be known beside the rows.
+ * @param measured of the result
+ * @returns two sentences
+ */
+export function measuredNote({ levelKvar }: MeasuredCheck): string {
+  return (
+    `With ${formatQuantity(levelKvar, 'kvar')} connected. A reading checks the model and is never added to its ` +
+    'sources; it stands outside where it passes the corners by more than a tenth.'
+  );
+}
+
+/**
+ * Each reading beside what the model gives.
+ * @param measured of the result
+ * @returns cells under `MEASURED_HEADS`
+ */
+export function measuredRows({ rows }: MeasuredCheck): string[][] {
+  return rows.map((row) => [
+    formatNumber(row.orderH, 'given'),
+    row.quantity,
+    formatQuantity(row.measured, row.unit, 'given'),
+    formatQuantity(row.computed, row.unit),
+    formatRange({ low: row.low, high: row.high }, row.unit, 'computed'),
+    row.differencePct === null ? '–' : formatQuantity(row.differencePct, '%'),
+    row.standing,
+  ]);
+}

@@ -1,0 +1,150 @@
+import type { Duty, EstimateOutcome, Outcome } from '#libs/engine/index.js';
+import { formatApart, formatNumber, formatQuantity, formatRange, GAP } from './format-number.js';
+import { groupName } from './group-name.js';
+import { plainName } from './plain-name.js';
+import { reactorWords } from './proposed-words.js';
+import { bothRatings } from './single-line.js';
+import { verdictWords } from './verdict-words.js';
+
+/** What the network operator is told and asked. */
+export interface OperatorPage {
+  facts: [label: string, value: string][];
+  /** what the bank does to the network, beside its limit */
+  effects: { what: string; value: string; limit: string; source: string; verdict: string }[];
+  questions: { question: string; taken: string }[];
+}
+
+/** Rows of the network that concern the operator. */
+const NETWORK_ROWS = ['voltage distortion', 'harmonic voltage', 'harmonic current', 'current distortion'];
+
+/**
+ * The plan as a network operator reads it: connection, bank, effect on the network, and what is asked of the operator.
+ * @param outcome plan or judgement
+ * @returns facts, effects and questions
+ */
+export function operatorPage(outcome: Outcome | EstimateOutcome): OperatorPage {
+  return { facts: facts(outcome), effects: effects(outcome), questions: questions(outcome) };
+}
+
+function facts(outcome: Outcome | EstimateOutcome): OperatorPage['facts'] {
+  const { site, bank, result } = outcome;
+  const { faultLevelMva, transformers } = site.supply;
+  const tuned = [
+    ...new Set(result.bank.stages.flatMap(({ tunedOrderH }) => (tunedOrderH === null ? [] : [tunedOrderH]))),
+  ];
+  return [
+    ['site', plainName(site.name)],
+    ['nominal voltage of the board', formatQuantity(site.nominalV, 'V', 'given')],
+    ['frequency', formatQuantity(site.frequencyHz, 'Hz', 'given')],
+    [
+      transformers.length === 0 ? 'fault level at the board' : 'fault level at the primary',
+      formatRange({ low: faultLevelMva.min, high: faultLevelMva.max }, 'MVA'),
+    ],
+    [
+      'transformers',
+      transformers.length === 0
+        ? 'none given'
+        : transformers
+            .map(
+              ({ ratedKva, impedancePct }) =>
+                `${formatQuantity(ratedKva, 'kVA', 'given')}, ${formatQuantity(impedancePct, '%', 'given')}`,
+            )
+            .join('; '),
+    ],
+    ['point of coupling taken', plainName(result.limits.couplingPoint)],
+    ['metered at', site.meteredAt === 'primary' ? 'the transformer’s primary' : 'the board'],
+    ['bank, effective', formatQuantity(result.bank.effectiveKvar, 'kvar')],
+    [
+      'stages',
+      bank.groups.map((group) => `${group.count}${GAP}×${GAP}${bothRatings(outcome, group)}`).join('; ') || 'none',
+    ],
+    ['reactors', bank.groups.length === 0 ? 'none' : reactorWords(bank.groups)],
+    ['tuned order', tuned.length === 0 ? '–' : tuned.map((order) => formatNumber(order)).join(', ')],
+  ];
+}
+
+function effects({ result }: Outcome | EstimateOutcome): OperatorPage['effects'] {
+  const ofNetwork = result.duties.filter(({ name }) => NETWORK_ROWS.includes(name)).map(dutyEffect);
+  const change = result.devices
+    .filter(({ device }) => device === 'stage.voltageChange')
+    .reduce<number | null>((most, { value }) => (typeof value === 'number' ? Math.max(most ?? 0, value) : most), null);
+  const limit = result.devices.find(({ device }) => device === 'stage.voltageChange')?.most;
+  const inrush = result.inrush.stages.map((stage) => Math.max(stage.singlePeakA, stage.worstPeakA ?? 0));
+  return [
+    ...ofNetwork,
+    ...(change === null
+      ? []
+      : [
+          {
+            what: 'voltage change by the largest stage, at the least fault level',
+            value: formatQuantity(change, '%'),
+            limit: typeof limit === 'number' ? formatQuantity(limit, '%', 'given') : '–',
+            source: 'common practice',
+            verdict: '–',
+          },
+        ]),
+    ...(inrush.length === 0
+      ? []
+      : [
+          {
+            what: 'inrush of a stage, peak',
+            value: formatQuantity(Math.max(...inrush), 'A'),
+            limit: '–',
+            source: 'closed form or exact, the larger',
+            verdict: '–',
+          },
+        ]),
+    ...result.devices
+      .filter(({ device }) => device === 'stage.ripple')
+      .map(({ group, value, fitted, unit, state }) => ({
+        what: group === null ? 'ripple signal' : `ripple signal, ${groupName(group)}`,
+        value: typeof fitted === 'number' ? `tuned to ${formatQuantity(fitted, unit)}` : 'no reactor',
+        limit: typeof value === 'number' ? formatQuantity(value, unit, 'given') : '–',
+        source: 'common practice',
+        verdict: state === 'fits' ? 'blocks' : 'may draw the signal in',
+      })),
+  ];
+}
+
+function dutyEffect(duty: Duty): OperatorPage['effects'][number] {
+  const order = duty.orderH === null ? '' : `, order${GAP}${formatNumber(duty.orderH, 'given')}`;
+  const apart = duty.limit === null ? null : formatApart(duty.value, duty.limit);
+  return {
+    what: `${duty.name}${order}`,
+    value: `${apart?.value ?? formatNumber(duty.value)}${GAP}${duty.unit}`,
+    limit: apart === null ? '–' : `${apart.limit}${GAP}${duty.unit}`,
+    source: duty.source,
+    verdict: verdictWords(duty.verdict),
+  };
+}
+
+function questions({ site, result }: Outcome | EstimateOutcome): OperatorPage['questions'] {
+  const { faultLevelMva, rippleHz } = site.supply;
+  const background = site.loads.backgroundPct;
+  return [
+    {
+      question: 'greatest and least fault level at the point of coupling',
+      taken: formatRange({ low: faultLevelMva.min, high: faultLevelMva.max }, 'MVA'),
+    },
+    {
+      question: 'distortion of the supply with the site’s plant off, by order',
+      taken:
+        background === null
+          ? 'unknown'
+          : background.length === 0
+            ? 'none, as declared'
+            : background
+                .map(
+                  ({ orderH, pct }) => `order ${formatNumber(orderH, 'given')}: ${formatQuantity(pct, '%', 'given')}`,
+                )
+                .join(', '),
+    },
+    {
+      question: 'frequency of a ripple signal, and whether stages have to block it',
+      taken: rippleHz === null ? 'none entered' : formatQuantity(rippleHz, 'Hz', 'given'),
+    },
+    { question: 'limits of distortion that apply, and the point of coupling', taken: result.limits.voltage },
+    { question: 'consent to connect the bank, and to the voltage change of a stage', taken: '–' },
+    { question: 'capacitors of others near by, in service or planned', taken: 'none' },
+  ];
+}

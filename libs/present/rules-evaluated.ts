@@ -1,0 +1,53 @@
+import type { EstimateResult, Result } from '#libs/engine/index.js';
+import { formatNumber } from './format-number.js';
+import { RECORD_MESSAGES } from './record-messages.js';
+
+/** How many rules a result was put to, triggered or not. */
+export interface RulesEvaluated {
+  /** rows held against a limit */
+  rows: number;
+  /** rows without a limit, or of unknown loads */
+  notJudged: number;
+  /** devices whose fitted rating was held against what it meets */
+  devices: number;
+  /** assumptions moved to either end of what practice meets */
+  assumptions: number;
+  /** signs of a fault that the record's values were searched for */
+  signs: number;
+}
+
+const SIGNS = Object.keys(RECORD_MESSAGES).filter((code) => code.startsWith('sign.')).length;
+
+/**
+ * Counts the rules that were evaluated, so that silence can be told from not having looked.
+ * @param result plan or judgement
+ * @returns counts by kind
+ */
+export function rulesEvaluated(result: Result | EstimateResult): RulesEvaluated {
+  const { duties, devices, assumptions, record } = result;
+  const judged = duties.filter(({ verdict }) => verdict !== null).length;
+  return {
+    rows: judged,
+    notJudged: duties.length - judged,
+    devices: devices.filter(({ state }) => state === 'fits' || state === 'short').length,
+    assumptions: assumptions.filter(({ effect }) => effect !== null).length,
+    signs: record === null ? 0 : SIGNS,
+  };
+}
+
+/**
+ * The count of rules in words.
+ * @param rules counts
+ * @returns a sentence, the sum first
+ */
+export function rulesWords({ rows, notJudged, devices, assumptions, signs }: RulesEvaluated): string {
+  const whole = (count: number): string => formatNumber(count, 'whole');
+  const parts = [
+    `${whole(rows)} ${rows === 1 ? 'row' : 'rows'} held against a limit`,
+    `${whole(devices)} fitted ${devices === 1 ? 'rating' : 'ratings'}`,
+    `${whole(assumptions)} ${assumptions === 1 ? 'assumption' : 'assumptions'} moved to either end`,
+    `${whole(signs)} signs of a fault in the record`,
+  ];
+  const open = notJudged === 0 ? 'none was left unjudged' : `${whole(notJudged)} could not be judged`;
+  return `${whole(rows + devices + assumptions + signs)} rules were evaluated: ${parts.join(', ')}; ${open}.`;
+}

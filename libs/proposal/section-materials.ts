@@ -1,0 +1,32 @@
+import type { BankOutcome } from '#libs/engine/index.js';
+import { scheduleOfMaterials } from '#libs/present/schedule-of-materials.js';
+import { NOTE, type Paper } from './paper.js';
+import { drawTable } from './table.js';
+
+/** What is to be bought, by ratings and never by product. */
+export function drawMaterials(paper: Paper, outcome: BankOutcome): void {
+  const lines = scheduleOfMaterials(outcome);
+  if (lines.length === 0) {
+    paper.heading('19', 'Schedule of materials: nothing is built');
+    paper.paragraph(['Nothing is to be bought.']);
+    return;
+  }
+  paper.heading('19', `Schedule of materials: ${lines.length} items, by their ratings`);
+  const columns = [
+    { head: 'item', share: 36 },
+    { head: 'number', share: 12, align: 'right' as const },
+    { head: 'rating', share: 72 },
+  ];
+  drawTable(
+    paper,
+    columns,
+    lines.map(({ item, number, rating }) => [item, number, rating]),
+    { after: 5 },
+  );
+  paper.paragraph(
+    [
+      'Least ratings by this plan; section 7.2 names their sources. What is offered otherwise is entered and judged again.',
+    ],
+    { style: NOTE },
+  );
+}

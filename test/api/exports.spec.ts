@@ -1,0 +1,115 @@
+// Round trip over HTTP: what is exported and imported again has the same hash. Tables are read back by csv-parse.
+import { parse } from 'csv-parse/sync';
+import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import { canonicalJson } from '#libs/contract/canonical-json.js';
+import { readWorkbookRows } from '#libs/meter-files/xlsx/read-workbook-rows.js';
+import { databases, type TestDatabase } from '../support/databases.js';
+import { startServer, type TestServer } from '../support/test-server.js';
+import { meterFile, siteFile } from './site-builder.js';
+
+const { create } = databases[0]!;
+const FORMS = ['json', 'csv', 'xlsx'];
+const NAME = '=HYPERLINK("http://x","y") & Söhne';
+
+describe('exports over HTTP', () => {
+  let database: TestDatabase;
+  let server: TestServer;
+  let id: string;
+  let recordId: string;
+  let recordHash: string;
+  let contentHash: string;
+
+  beforeAll(async () => {
+    database = await create();
+    server = await startServer(database.url);
+    id = (await server.ask('POST', '/api/sites', siteFile({ name: NAME }))).body.id;
+    await server.upload(id, meterFile(9));
+    const plan = (await server.ask('POST', `/api/sites/${id}/assessments?wait=60`, {})).body;
+    ({ recordId, recordHash, contentHash } = plan);
+  });
+
+  afterAll(async () => {
+    await server.close();
+    await database.drop();
+  });
+
+  const file = async (path: string) => {
+    const response = await fetch(`${server.base}/api/sites/${id}${path}`);
+    return { status: response.status, bytes: Buffer.from(await response.arrayBuffer()), headers: response.headers };
+  };
+  const imported = (path: string, body: Buffer, type: string) =>
+    fetch(server.base + path, { method: 'POST', headers: { 'content-type': type }, body: new Uint8Array(body) });
+
+  it.each(FORMS)('give a site as %s that is taken back as the same site', async (form) => {
+    const { status, bytes, headers } = await file(`/exports/site.${form}`);
+    expect(status).toBe(200);
+    expect(headers.get('content-disposition')).toBe(`attachment; filename="site.${form}"`);
+    const path = form === 'json' ? '/api/sites' : '/api/site-imports';
+    const type = { json: 'application/json', csv: 'text/csv', xlsx: 'application/octet-stream' }[form]!;
+    const answer = await imported(path, bytes, type);
+    expect(answer.status).toBe(201);
+    const { site } = (await answer.json()) as { site: unknown };
+    expect(canonicalJson(site)).toBe(canonicalJson(siteFile({ name: NAME })));
+  });
+
+  it.each(FORMS)('give a record as %s that is uploaded again with the same hash, and plans the same', async (form) => {
+    const { bytes } = await file(`/records/${recordId}/exports/record.${form}`);
+    const other = (await server.ask('POST', '/api/sites', siteFile({ name: NAME }))).body.id;
+    const uploaded = await server.upload(other, bytes);
+    expect(uploaded.status).toBe(201);
+    const again = (await server.ask('POST', `/api/sites/${other}/assessments?wait=60`, {})).body;
+    expect([again.recordHash, again.contentHash]).toEqual([recordHash, contentHash]);
+  });
+
+  it('give plan and calculation sheet with the result’s own numbers', async () => {
+    const { result } = (await server.ask('GET', `/api/sites/${id}/revisions/1`)).body;
+    expect(JSON.parse((await file('/revisions/1/exports/plan.json')).bytes.toString())).toEqual(result);
+    const rows = parse((await file('/revisions/1/exports/plan.csv')).bytes, { columns: true }) as Record<
+      string,
+      string
+    >[];
+    const value = (path: string) => Number(rows.find((row) => row.path === path)!.value);
+    expect(value('requirement.p99Kvar')).toBe(result.requirement.p99Kvar);
+    expect(value('duties[0].value')).toBe(result.duties[0].value);
+    const sheet = parse((await file('/revisions/1/exports/calculation.csv')).bytes, { columns: true }) as {
+      id: string;
+      value: string;
+    }[];
+    expect(sheet.map((row) => [row.id, Number(row.value)])).toEqual(
+      result.figures.map((figure: { id: string; value: number }) => [figure.id, figure.value]),
+    );
+    const { bytes } = await file('/revisions/1/exports/calculation.xlsx');
+    const cells = await readWorkbookRows(once(bytes));
+    expect(cells[0]!.slice(0, 3)).toEqual(['id', 'label', 'value']);
+    expect(cells.slice(1).map(([, , cell]) => Number(cell))).toEqual(
+      result.figures.map((figure: { value: number }) => figure.value),
+    );
+  });
+
+  it('let no spreadsheet run a name', async () => {
+    const text = (await file('/exports/site.csv')).bytes.toString();
+    expect(text).toContain(`"'=HYPERLINK(`);
+    expect(text).not.toMatch(/(^|,)"?=/m);
+  });
+
+  it.each([
+    '/exports/site.pdf',
+    '/exports/plan.json',
+    '/revisions/1/exports/site.csv',
+    '/revisions/9/exports/plan.csv',
+    '/records/00000000-0000-0000-0000-000000000000/exports/record.csv',
+  ])('know no %s', async (path) => {
+    expect((await file(path)).status).toBe(404);
+  });
+
+  it('refuse a site file that is none, naming the row', async () => {
+    const answer = await imported('/api/site-imports', Buffer.from('path,kind,value\nname,number,x\n'), 'text/csv');
+    expect(answer.status).toBe(422);
+    expect(await answer.json()).toMatchObject({ code: 'unreadable', row: 2 });
+    expect((await imported('/api/site-imports', Buffer.from('time,kW\n'), 'text/csv')).status).toBe(422);
+  });
+});
+
+async function* once(bytes: Uint8Array): AsyncGenerator<Uint8Array> {
+  yield bytes;
+}
