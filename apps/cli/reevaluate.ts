@@ -21,11 +21,13 @@ import { reevaluationReport } from '#libs/present/reevaluation-report.js';
 import { resultReport } from '#libs/present/terminal-report.js';
 import type { CommandLine } from './command.js';
 import { usage } from './command-line.js';
-import { readJson } from './input-file.js';
 import { readMeterRecord } from './meter-record.js';
 import { say, write, writeJson } from './output.js';
+import { type PaperSheet, paperSheet } from './paper-sheet.js';
+import { planExports } from './plan-exports.js';
 import { proposalTarget } from './proposal-target.js';
 import { inFile } from './refused-file.js';
+import { readSiteDocument } from './site-document.js';
 
 /**
  * `assess SITE --load METER-FILE --before SITE [--before-load METER-FILE]`: judges the site's bank again, beside what it
@@ -37,7 +39,9 @@ export async function reevaluate(line: CommandLine): Promise<number> {
   const load = line.values.get('load');
   if (load === undefined) throw new InputProblem([usage('--load METER-FILE beside --before', 'none')]);
   const pdf = line.values.get('pdf');
+  const sheet = await paperSheet(line);
   const target = pdf === undefined ? null : await proposalTarget(pdf);
+  const exports = await planExports(line);
   const now = await siteIn(line.operand);
   const then = await siteIn(line.values.get('before')!);
   const { record } = await readMeterRecord(line, load, now.timeZone);
@@ -48,9 +52,10 @@ export async function reevaluate(line: CommandLine): Promise<number> {
   const judged = inWords(reevaluateBank(before, after));
   await nextTurn(); // an interruption that came meanwhile is heard here
   if (target !== null) {
-    await target.write(await paperOf(judged, [after, before]));
+    await target.write(await paperOf(judged, [after, before], sheet));
     say(`proposal written to ${pdf}`);
   }
+  for (const path of await exports.write(judged.after)) say(`written: ${path}`);
   const { result } = judged.after;
   if (line.flags.has('json')) await writeJson({ ...result, reevaluation: judged.reevaluation });
   else await write(`${reevaluationReport(judged)}\n${resultReport(judged.after)}`);
@@ -59,7 +64,7 @@ export async function reevaluate(line: CommandLine): Promise<number> {
 
 function siteIn(path: string): Promise<Site> {
   return inFile(path, async () => {
-    const site = frozenSite(await readSiteWithMathjs(await readJson(path)), Date.now() / 1000);
+    const site = frozenSite(await readSiteWithMathjs(await readSiteDocument(path)), Date.now() / 1000);
     if (site.bank !== undefined) return site;
     throw new InputProblem([
       { code: 'missing', path: 'bank', expected: 'the bank that stands there', found: 'nothing' },
@@ -85,7 +90,11 @@ function inWords({ reevaluation, before, after }: Reevaluated): Reevaluated {
   };
 }
 
-async function paperOf({ reevaluation, after }: Reevaluated, inputs: readonly SiteThen[]): Promise<Uint8Array> {
+async function paperOf(
+  { reevaluation, after }: Reevaluated,
+  inputs: readonly SiteThen[],
+  sheet: PaperSheet,
+): Promise<Uint8Array> {
   const { renderProposal } = await import('#libs/proposal/render-proposal.js');
   const hash = createHash('sha256');
   for (const { site, record, zone } of inputs) {
@@ -102,6 +111,8 @@ async function paperOf({ reevaluation, after }: Reevaluated, inputs: readonly Si
     preparedBy: null,
     contentHash,
     engineVersion: ENGINE_VERSION,
+    date: after.site.asOf,
     reevaluation,
+    ...sheet,
   });
 }

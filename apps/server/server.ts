@@ -49,6 +49,7 @@ import { RecordsController } from './records/records-controller.js';
 import { Spool } from './records/spool.js';
 import { UploadIntake } from './records/upload-intake.js';
 import { refuseOtherBodies, takesFile } from './request-bodies.js';
+import { ReevaluationController } from './reevaluation/reevaluation-controller.js';
 import { DifferencesController } from './review/differences-controller.js';
 import { ReviewController } from './review/review-controller.js';
 import { ReviewPageController } from './review/review-page-controller.js';
@@ -81,6 +82,7 @@ const CONTROLLERS: ServerParts['controllers'] = [
   ReviewController,
   ReviewPageController,
   DifferencesController,
+  ReevaluationController,
   VerifyController,
   KeptMapsController,
   PapersController,

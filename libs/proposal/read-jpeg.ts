@@ -1,5 +1,5 @@
-import { needPixels } from './read-png.js';
 import { logoProblem } from './raster.js';
+import { needPixels } from './read-png.js';
 
 /** A JPEG without what is no picture: its segments, width and height. */
 export interface PlainJpeg {

@@ -3,7 +3,7 @@
 import { deflateSync } from 'node:zlib';
 import { describe, expect, it } from 'vitest';
 import { InputProblem } from '#libs/engine/index.js';
-import { jpegFile, pngFile, type PngParts } from '../../test/support/made-picture.js';
+import { jpegFile, type PngParts, pngFile } from '../../test/support/made-picture.js';
 import { MOST_LOGO_BYTES, MOST_LOGO_PIXELS } from './raster.js';
 import { readJpeg } from './read-jpeg.js';
 import { readLogo } from './read-logo.js';

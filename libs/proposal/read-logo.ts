@@ -1,7 +1,7 @@
 import { deflateSync } from 'node:zlib';
+import { logoProblem, MOST_LOGO_BYTES, type Raster } from './raster.js';
 import { isJpeg, readJpeg } from './read-jpeg.js';
 import { isPng, readPng } from './read-png.js';
-import { logoProblem, MOST_LOGO_BYTES, type Raster } from './raster.js';
 
 /** A logo fit to be set into a paper. */
 export interface Logo {

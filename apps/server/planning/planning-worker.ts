@@ -1,3 +1,4 @@
 // The file worker threads are started with: what it exports they can run.
+export { computeReevaluation } from '../reevaluation/compute-reevaluation.js';
 export { computePlan } from './compute-plan.js';
 export { readFile } from './read-file.js';

@@ -39,7 +39,7 @@ export class Planning {
     if (kind === 'assess' && site.bank === undefined) {
       throw new InputProblem([{ code: 'missing', path: 'bank', expected: 'the bank to judge', found: 'nothing' }]);
     }
-    const record = await this.#recordOf(stored.id, request.recordId);
+    const record = await this.recordOf(stored.id, request.recordId);
     if (record === null && site.estimate === undefined) throw nothingToPlanWith();
     if (request.logo !== undefined) readLogo(Buffer.from(request.logo, 'base64'));
     const zone = record === null ? estimateZone(site) : zoneTableOf(site.timeZone, record);
@@ -72,7 +72,13 @@ export class Planning {
     return this.jobs.submit({ siteId, kind, inputHash: hash, engineVersion: ENGINE_VERSION, request: frozen });
   }
 
-  async #recordOf(siteId: string, recordId: string | undefined): Promise<StoredRecord | null> {
+  /**
+   * The record a site is planned by.
+   * @param siteId of the site
+   * @param recordId a certain one; the latest where absent
+   * @returns null where the site has none
+   */
+  async recordOf(siteId: string, recordId: string | undefined): Promise<StoredRecord | null> {
     if (recordId !== undefined) return findRecord(this.store, { id: siteId }, recordId);
     const [latest] = await this.store.read((manager) =>
       manager.find(StoredRecord, { where: { siteId }, order: { createdAt: 'DESC', id: 'ASC' }, take: 1 }),

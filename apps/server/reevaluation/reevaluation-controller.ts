@@ -1,0 +1,53 @@
+import { Controller, Get, Param, Res } from '@nestjs/common';
+import type { FastifyReply } from 'fastify';
+import { frozenSite } from '#libs/contract/frozen-site.js';
+import { readSiteWithMathjs } from '#libs/contract/read-site-with-mathjs.js';
+import { zoneTableOf } from '#libs/contract/time-zone.js';
+import { InputProblem, type SiteThen } from '#libs/engine/index.js';
+import { WorkerPool } from '#libs/jobs/pool/worker-pool.js';
+import { readRecord } from '#libs/store/records.js';
+import { Store } from '#libs/store/store.js';
+import type { StoredSite } from '#libs/store/stored-site.js';
+import { actorOf } from '../people/actor.js';
+import { Needs } from '../people/needs.js';
+import { findRevision, type RevisionPath } from '../planning/find-revision.js';
+import { Planning } from '../planning/planning.js';
+import { revisionHead } from '../planning/show-revision.js';
+import { findSite } from '../sites/find-site.js';
+import type { ReevaluationTask, ReevaluationValue } from './compute-reevaluation.js';
+import { siteThen } from './site-then.js';
+
+/** A bank as it stands now, beside what a revision found. */
+@Controller('api/sites/:siteId/revisions/:revision/reevaluation')
+export class ReevaluationController {
+  constructor(
+    private readonly store: Store,
+    private readonly pool: WorkerPool,
+    private readonly planning: Planning,
+  ) {}
+
+  @Get()
+  @Needs(
+    'viewer',
+    'Judges the site’s bank by its latest record beside a revision: what to do first, what changed, what mends it. Nothing is kept.',
+  )
+  async reevaluate(@Param() path: RevisionPath, @Res() reply: FastifyReply) {
+    const actor = actorOf(reply.request);
+    const revision = await findRevision(this.store, actor, path);
+    const after = await this.#now(await findSite(this.store, actor, path.siteId));
+    const task: ReevaluationTask = { before: await siteThen(this.store, revision), after };
+    const value = await this.pool.run<ReevaluationValue>('computeReevaluation', task);
+    return reply.send({ revision: revisionHead(revision), ...value });
+  }
+
+  async #now(stored: StoredSite): Promise<SiteThen> {
+    const site = frozenSite(await readSiteWithMathjs(stored.document), Date.now() / 1000);
+    const latest = await this.planning.recordOf(stored.id, undefined);
+    const record = latest === null ? null : await this.store.read((manager) => readRecord(manager, latest.id));
+    if (record === null) {
+      const expected = 'a load record of this site: upload a meter file first';
+      throw new InputProblem([{ code: 'missing', path: 'recordId', expected, found: 'none' }]);
+    }
+    return { site, record, zone: zoneTableOf(site.timeZone, record) };
+  }
+}

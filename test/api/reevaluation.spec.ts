@@ -1,0 +1,50 @@
+import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import { databases, type TestDatabase } from '../support/databases.js';
+import { startServer, type TestServer } from '../support/test-server.js';
+import { meterFile, siteFile } from './site-builder.js';
+
+const STAGE = { count: 4, ratedKvar: 25, ratedV: 480, reactorPct: 7 };
+
+describe('a bank judged again over HTTP', () => {
+  let database: TestDatabase;
+  let server: TestServer;
+
+  beforeAll(async () => {
+    database = await databases[0]!.create();
+    server = await startServer(database.url);
+  });
+
+  afterAll(async () => {
+    await server.close();
+    await database.drop();
+  });
+
+  it('stands beside the revision it is held against, and leaves nothing behind', async () => {
+    const made = await server.ask('POST', '/api/sites', siteFile({ bank: { stages: [STAGE] } }));
+    const site = `/api/sites/${made.body.id}`;
+    expect((await server.upload(made.body.id, meterFile())).status).toBe(201);
+    expect((await server.ask('POST', `${site}/assessments?wait=60`, {})).status).toBe(201);
+    const same = await server.ask('GET', `${site}/revisions/1/reevaluation`);
+    expect(same.status).toBe(200);
+    expect(same.body.reevaluation).toMatchObject({ inputs: [], changes: [], newRecord: false, since: null });
+
+    const lost = siteFile({ bank: { stages: [{ ...STAGE, count: 2 }] } });
+    const seen = { 'if-match': made.headers.get('etag') ?? '' };
+    expect((await server.ask('PUT', site, lost, seen)).status).toBe(200);
+    const { body } = await server.ask('GET', `${site}/revisions/1/reevaluation`);
+    expect(body.revision).toMatchObject({ revision: 1 });
+    expect(body.reevaluation.inputs).toEqual([{ path: 'bank.stages[0].count', before: 4, after: 2 }]);
+    expect(body.result.verdict).toBe(body.reevaluation.verdict.after);
+    expect((await server.ask('GET', `${site}/revisions`)).body.revisions).toHaveLength(1);
+  });
+
+  it('is refused for a site without a bank, and for a revision that is not there', async () => {
+    const { id } = (await server.ask('POST', '/api/sites', siteFile({ bank: undefined }))).body;
+    await server.upload(id, meterFile());
+    expect((await server.ask('POST', `/api/sites/${id}/plans?wait=60`, {})).status).toBe(201);
+    const refused = await server.ask('GET', `/api/sites/${id}/revisions/1/reevaluation`);
+    expect(refused.status).toBe(422);
+    expect(refused.body.problems[0]).toMatchObject({ code: 'missing', path: 'bank' });
+    expect((await server.ask('GET', `/api/sites/${id}/revisions/9/reevaluation`)).status).toBe(404);
+  });
+});
