@@ -5,6 +5,7 @@ import { Organisations1764640800000 } from './1764640800000-organisations.js';
 import { People1764644400000 } from './1764644400000-people.js';
 import { LinksAndAnswers1764648000000 } from './1764648000000-links-and-answers.js';
 import { Reviews1764651600000 } from './1764651600000-reviews.js';
+import { SharedPapers1764655200000 } from './1764655200000-shared-papers.js';
 
 /** Every change of the schema, oldest first. */
 export const migrations = [
@@ -15,4 +16,5 @@ export const migrations = [
   People1764644400000,
   LinksAndAnswers1764648000000,
   Reviews1764651600000,
+  SharedPapers1764655200000,
 ];

@@ -1,4 +1,4 @@
-import { assessBank, assessEstimate, InputProblem } from '#libs/engine/index.js';
+import { InputProblem } from '#libs/engine/index.js';
 import type { CommandLine } from './command.js';
 import { usage } from './command-line.js';
 import { judgeSite } from './judge-site.js';
@@ -7,5 +7,5 @@ import { judgeSite } from './judge-site.js';
 export async function run(line: CommandLine): Promise<number> {
   if (line.values.has('before')) return (await import('./reevaluate.js')).reevaluate(line);
   if (line.values.has('before-load')) throw new InputProblem([usage('--before SITE beside --before-load', 'none')]);
-  return judgeSite(line, 'assess', { record: assessBank, estimate: assessEstimate });
+  return judgeSite(line, 'assess');
 }

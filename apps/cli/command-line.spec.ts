@@ -21,11 +21,10 @@ describe('the arguments of a command', () => {
     expect(line).toEqual({
       command: 'plan',
       operand: 'site.json',
-      values: new Map([
-        ['load', 'load.csv'],
-        ['pdf', 'out.pdf'],
-      ]),
-      lists: new Map(),
+      operands: ['site.json'],
+      loads: ['load.csv'],
+      values: new Map([['pdf', 'out.pdf']]),
+      lists: new Map([['load', ['load.csv']]]),
       flags: new Set(['json']),
     });
   });
@@ -33,6 +32,17 @@ describe('the arguments of a command', () => {
   it('may hold further meter files, in the order they were typed', () => {
     const args = ['site.json', '--extend', 'b.csv', '--load', 'a.csv', '--extend=c.csv'];
     expect(readCommandLine('plan', plan, args).lists.get('extend')).toEqual(['b.csv', 'c.csv']);
+  });
+
+  it('may be several sites, each with its meter file', () => {
+    const line = readCommandLine('plan', plan, ['a.json', '--load', 'a.csv', 'b.json', '--load=b.csv']);
+    expect([line.operands, line.loads]).toEqual([
+      ['a.json', 'b.json'],
+      ['a.csv', 'b.csv'],
+    ]);
+    expect(() => readCommandLine('assess', COMMANDS.assess!, ['a.json', 'b.json'])).toThrow(
+      /one SITE, found a\.json b/,
+    );
   });
 
   it('may be "-" for standard input, once', () => {
@@ -46,7 +56,13 @@ describe('the arguments of a command', () => {
 
   it.each([
     ['no operand', [], 'one SITE', 'none'],
-    ['two operands', ['a', 'b'], 'one SITE', 'a b'],
+    [
+      'a site without its meter file',
+      ['a', 'b', '--load', 'c'],
+      'a --load for each of the 2 SITE, in their order, or none',
+      '1',
+    ],
+    ['a proposal of several sites', ['a', 'b', '--pdf', 'c'], '--pdf with one SITE only', '2'],
     ['an option without its value', ['a', '--load'], '--load METER-FILE', 'no value'],
     ['a further file without its name', ['a', '--extend'], '--extend METER-FILE', 'no value'],
     ['an option with an empty value', ['a', '--load='], '--load METER-FILE', 'no value'],
@@ -56,19 +72,19 @@ describe('the arguments of a command', () => {
     [
       'an unknown option',
       ['a', '--lod', '--json'],
-      'one of --load, --pdf, --paper, --logo, --export, --calculation, --figures, --format, --map, --time-zone, --extend, --json',
+      'one of --pdf, --paper, --logo, --export, --calculation, --figures, --format, --map, --time-zone, --load, --extend, --json',
       '--lod',
     ],
     [
       'a short option',
       ['a', '-j'],
-      'one of --load, --pdf, --paper, --logo, --export, --calculation, --figures, --format, --map, --time-zone, --extend, --json',
+      'one of --pdf, --paper, --logo, --export, --calculation, --figures, --format, --map, --time-zone, --load, --extend, --json',
       '-j',
     ],
     [
       'a name of the language',
       ['a', '--constructor'],
-      'one of --load, --pdf, --paper, --logo, --export, --calculation, --figures, --format, --map, --time-zone, --extend, --json',
+      'one of --pdf, --paper, --logo, --export, --calculation, --figures, --format, --map, --time-zone, --load, --extend, --json',
       '--constructor',
     ],
   ])('with %s are refused, naming it', (_what, args, expected, found) => {
@@ -76,7 +92,7 @@ describe('the arguments of a command', () => {
   });
 
   it('are refused with everything that is wrong at once', () => {
-    expect(problemsOf(['--lod', 'x', 'y', '--json=1'])).toHaveLength(3);
+    expect(problemsOf(['--lod', 'x', 'y', '--load', 'z', '--json=1'])).toHaveLength(3);
   });
 });
 

@@ -19,16 +19,25 @@ export function readCommandLine(name: string, command: Command, args: string[]):
     ...Object.fromEntries(command.flags.map((key) => [key, { type: 'boolean' as const }])),
   };
   const { tokens } = parseArgs({ args, options, strict: false, allowPositionals: true, tokens: true });
-  const line: CommandLine = { command: name, operand: '', values: new Map(), lists: new Map(), flags: new Set() };
+  const line: CommandLine = {
+    command: name,
+    operand: '',
+    operands: [],
+    loads: [],
+    values: new Map(),
+    lists: new Map(),
+    flags: new Set(),
+  };
   const operands: string[] = [];
   const problems: Problem[] = [];
   for (const token of tokens) {
     if (token.kind === 'positional') operands.push(token.value);
     if (token.kind === 'option') problems.push(...takeOption(token, command, line));
   }
-  problems.push(...operandProblems(command, operands), ...stdinProblems(operands, line));
+  line.loads = line.lists.get('load') ?? [line.values.get('load') ?? []].flat();
+  problems.push(...operandProblems(command, operands, line), ...stdinProblems(operands, line));
   if (problems.length > 0) throw new InputProblem(problems);
-  return { ...line, operand: operands[0]! };
+  return { ...line, operand: operands[0]!, operands };
 }
 
 function takeOption(
@@ -59,14 +68,29 @@ function valueNames({ values, lists }: Command): string[] {
   return [...Object.keys(values), ...Object.keys(lists)];
 }
 
-function operandProblems({ operand }: Command, operands: string[]): Problem[] {
-  if (operands.length === 1) return [];
-  return [usage(`one ${operand}`, operands.length === 0 ? 'none' : operands.join(' '))];
+function operandProblems({ operand, several }: Command, operands: string[], line: CommandLine): Problem[] {
+  if (operands.length === 0) return [usage(`one ${operand}`, 'none')];
+  if (several !== true) return operands.length === 1 ? [] : [usage(`one ${operand}`, operands.join(' '))];
+  if (operands.length === 1) return line.loads.length <= 1 ? [] : [usage('--load once', 'it twice')];
+  return severalProblems(operand, operands.length, line);
 }
 
-function stdinProblems(operands: string[], { values, lists }: CommandLine): Problem[] {
-  const inputs = ['load', 'map', 'logo', 'before', 'before-load'].map((name) => values.get(name));
-  const named = [...operands, ...inputs, ...(lists.get('extend') ?? [])];
+// What belongs to one site can't be shared out among several.
+function severalProblems(operand: string, count: number, { loads, values, lists }: CommandLine): Problem[] {
+  const alone = ['pdf', 'export', 'calculation', 'figures', 'extend'].filter(
+    (name) => values.has(name) || lists.has(name),
+  );
+  return [
+    ...(loads.length === count || loads.length === 0
+      ? []
+      : [usage(`a --load for each of the ${count} ${operand}, in their order, or none`, `${loads.length}`)]),
+    ...alone.map((name) => usage(`--${name} with one ${operand} only`, `${count}`)),
+  ];
+}
+
+function stdinProblems(operands: string[], { values, lists, loads }: CommandLine): Problem[] {
+  const inputs = ['map', 'logo', 'before', 'before-load'].map((name) => values.get(name));
+  const named = [...operands, ...loads, ...inputs, ...(lists.get('extend') ?? [])];
   const files = named.filter((file) => file === STDIN);
   const toStdin = ['pdf', 'netlist', 'export', 'calculation', 'figures', 'keep']
     .filter((name) => values.get(name) === STDIN)

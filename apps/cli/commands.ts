@@ -41,11 +41,13 @@ export const COMMANDS: Record<string, Command> = {
   },
   plan: {
     operand: 'SITE',
-    values: { load: 'METER-FILE', pdf: 'OUT', ...SHEET_OPTIONS, ...EXPORT_OPTIONS, ...METER_OPTIONS },
-    lists: METER_LISTS,
+    several: true,
+    values: { pdf: 'OUT', ...SHEET_OPTIONS, ...EXPORT_OPTIONS, ...METER_OPTIONS },
+    lists: { load: 'METER-FILE', ...METER_LISTS },
     flags: ['json'],
     does: 'design a bank for a site and judge it',
-    details: PLAN_DETAILS,
+    details: `${PLAN_DETAILS}  several SITEs, each with a --load of its own in their order, give one table
+`,
     load: () => import('./plan.js'),
   },
   assess: {

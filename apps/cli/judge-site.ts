@@ -1,108 +1,104 @@
-import { createHash } from 'node:crypto';
 import { setImmediate as nextTurn } from 'node:timers/promises';
 import { EXIT } from '#libs/contract/error-body.js';
 import { estimateZone } from '#libs/contract/estimate-zone.js';
 import { frozenSite } from '#libs/contract/frozen-site.js';
-import { type PlanInputs, planContent } from '#libs/contract/plan-content.js';
 import { readSiteWithMathjs } from '#libs/contract/read-site-with-mathjs.js';
-import { recordBytes } from '#libs/contract/record-hash.js';
 import { zoneTableOf } from '#libs/contract/time-zone.js';
-import {
-  ENGINE_VERSION,
-  type EstimateOutcome,
-  InputProblem,
-  type LoadRecord,
-  type Outcome,
-  type Site,
-  withRobustness,
-  type ZoneTable,
-} from '#libs/engine/index.js';
-import { putEstimateInWords, putInWords } from '#libs/present/put-in-words.js';
-import { estimateReport, resultReport } from '#libs/present/terminal-report.js';
+import { InputProblem, type LoadRecord, type Outcome, type Site } from '#libs/engine/index.js';
+import { WorkerPool } from '#libs/jobs/pool/worker-pool.js';
+import { sitesReport } from '#libs/present/sites-table.js';
 import type { CommandLine } from './command.js';
 import { usage } from './command-line.js';
+import type { Judged, JudgeTask } from './judge-worker.js';
+import { judgingProgress } from './judging-progress.js';
 import { readMeterRecord } from './meter-record.js';
 import { say, write, writeJson } from './output.js';
-import { type PaperSheet, paperSheet } from './paper-sheet.js';
+import { paperSheet } from './paper-sheet.js';
 import { planExports } from './plan-exports.js';
 import { proposalTarget } from './proposal-target.js';
 import { inFile } from './refused-file.js';
 import { readSiteDocument } from './site-document.js';
 
-/** The engine's two functions of one command: from a meter's record, and from the site's own estimate. */
-interface Judges {
-  record(site: Site, record: LoadRecord, zone: ZoneTable): Outcome;
-  estimate(site: Site, zone: ZoneTable): EstimateOutcome;
-}
-
-/** An answer in words, with what prints it. */
-interface Told {
-  outcome: Outcome | EstimateOutcome;
-  report: string;
-  contentHash: string;
-  recordHash: string | null;
+/** A site file with the meter file beside it, if there is one. */
+interface Asked {
+  file: string;
+  site: Site;
+  load: string | undefined;
 }
 
 /**
- * What `plan` and `assess` share: site and record in, answer and proposal out. Without a meter file the site's estimate
- * stands in for the record.
+ * What `plan` and `assess` share: sites and records in, answers and a proposal out. Without a meter file the site's
+ * estimate stands in for the record. Several sites give one table.
  * @param line what was typed
  * @param kind which of the two it is
- * @param judges the engine's functions
  * @returns the exit code
  */
-export async function judgeSite(line: CommandLine, kind: Outcome['kind'], judges: Judges): Promise<number> {
-  const load = line.values.get('load');
+export async function judgeSite(line: CommandLine, kind: Outcome['kind']): Promise<number> {
   const pdf = line.values.get('pdf');
   const sheet = await paperSheet(line);
   const target = pdf === undefined ? null : await proposalTarget(pdf);
   const exports = await planExports(line);
-  const given = await inFile(line.operand, async () => readSiteWithMathjs(await readSiteDocument(line.operand)));
+  const asked: Asked[] = [];
+  for (const [at, file] of line.operands.entries()) asked.push(await askedOf(line, kind, file, line.loads[at]));
+  const pool = new WorkerPool(new URL('./judge-worker.js', import.meta.url), (error) => say(`fault: ${error}`), 1);
+  const judged: Judged[] = [];
+  try {
+    const of = { kind, sheet: target === null ? null : sheet, wantsOutcome: exports.areWanted };
+    for (const one of asked) judged.push(await judge(line, pool, one, of));
+  } finally {
+    await pool.close();
+  }
+  await nextTurn(); // an interruption that came meanwhile is heard here
+  const [first] = judged;
+  if (target !== null && first?.proposal) {
+    await target.write(first.proposal);
+    say(`proposal written to ${pdf}`);
+  }
+  if (first?.outcome) for (const path of await exports.write(first.outcome)) say(`written: ${path}`);
+  await tell(line, asked, judged);
+  return judged.some(({ result }) => result.verdict === 'avoid') ? EXIT.avoid : EXIT.done;
+}
+
+async function askedOf(
+  line: CommandLine,
+  kind: Outcome['kind'],
+  file: string,
+  load: string | undefined,
+): Promise<Asked> {
+  const given = await inFile(file, async () => readSiteWithMathjs(await readSiteDocument(file)));
+  await inFile(file, async () => needOwnPapers(given));
   const site = frozenSite(given, Date.now() / 1000);
   if (load === undefined && site.estimate === undefined) {
     throw new InputProblem([usage('--load METER-FILE, or a site file with an estimate', 'none')]);
   }
   if (load === undefined) needNoReading(line);
-  if (kind === 'assess') await inFile(line.operand, async () => needBank(site));
-  const told =
-    load === undefined
-      ? await inFile(line.operand, async () => byEstimate(site, kind, judges))
-      : byRecord(site, kind, judges, (await readMeterRecord(line, load, site.timeZone)).record);
-  await nextTurn(); // an interruption that came meanwhile is heard here
-  if (target !== null) {
-    await target.write(await proposalOf(told, sheet));
-    say(`proposal written to ${pdf}`);
-  }
-  for (const path of await exports.write(told.outcome)) say(`written: ${path}`);
-  const { result } = told.outcome;
-  if (line.flags.has('json')) await writeJson(result);
-  else await write(told.report);
-  return result.verdict === 'avoid' ? EXIT.avoid : EXIT.done;
+  if (kind === 'assess') await inFile(file, async () => needBank(site));
+  return { file, site, load };
 }
 
-function byRecord(site: Site, kind: Outcome['kind'], judges: Judges, record: LoadRecord): Told {
-  const zone = zoneTableOf(site.timeZone, record);
-  const computed = withRobustness(judges.record(site, record, zone));
-  const outcome: Outcome = { ...computed, result: putInWords(computed.result) };
-  const recordHash = sha256(recordBytes(record));
-  const contentHash = contentHashOf({ kind, site, recordHash, zone });
-  return { outcome, report: resultReport(outcome), contentHash, recordHash };
-}
-
-function byEstimate(site: Site, kind: Outcome['kind'], judges: Judges): Told {
-  const zone = estimateZone(site);
-  const computed = withRobustness(judges.estimate(site, zone));
-  const outcome: EstimateOutcome = { ...computed, result: putEstimateInWords(computed.result) };
-  return {
-    outcome,
-    report: estimateReport(outcome),
-    contentHash: contentHashOf({ kind, site, recordHash: null, zone }),
-    recordHash: null,
+async function judge(
+  line: CommandLine,
+  pool: WorkerPool,
+  { file, site, load }: Asked,
+  of: Pick<JudgeTask, 'kind' | 'sheet' | 'wantsOutcome'>,
+): Promise<Judged> {
+  const report = judgingProgress((progress) => say(`${file}: ${progress}`));
+  const run = (record: LoadRecord | null): Promise<Judged> => {
+    const zone = record === null ? estimateZone(site) : zoneTableOf(site.timeZone, record);
+    return pool.run<Judged>('judgeTask', { ...of, site, record, zone } satisfies JudgeTask, { report });
   };
+  if (load === undefined) return inFile(file, () => run(null));
+  return run((await readMeterRecord(line, load, site.timeZone)).record);
 }
 
-function contentHashOf(inputs: Omit<PlanInputs, 'engineVersion'>): string {
-  return sha256([planContent({ ...inputs, engineVersion: ENGINE_VERSION })]);
+async function tell(line: CommandLine, asked: readonly Asked[], judged: readonly Judged[]): Promise<void> {
+  const wantsJson = line.flags.has('json');
+  if (judged.length === 1) {
+    const { result, report } = judged[0]!;
+    return wantsJson ? writeJson(result) : write(report);
+  }
+  const sites = judged.map(({ result }, at) => ({ file: asked[at]!.file, name: asked[at]!.site.name, result }));
+  return wantsJson ? writeJson({ sites }) : write(sitesReport(judged.map(({ row }) => row)));
 }
 
 /** What says how a meter file is read has nothing to read. */
@@ -112,29 +108,21 @@ function needNoReading({ values }: CommandLine): void {
   throw new InputProblem(idle.map((name) => usage(`--load METER-FILE beside --${name}`, 'none')));
 }
 
+/** Shared papers are kept by a server; the command has none to ask. */
+function needOwnPapers({ papers }: Site): void {
+  const missing = (['tariff', 'prices'] as const).filter((kind) => papers?.[kind] !== undefined);
+  if (missing.length === 0) return;
+  throw new InputProblem(
+    missing.map((kind) => ({
+      code: 'missing',
+      path: kind,
+      expected: `"${kind}" in the file itself: shared papers are kept by a server`,
+      found: `the name of one, ${JSON.stringify(papers?.[kind]?.name)}`,
+    })),
+  );
+}
+
 function needBank(site: Site): void {
   if (site.bank !== undefined) return;
   throw new InputProblem([{ code: 'missing', path: 'bank', expected: 'the bank to judge', found: 'nothing' }]);
-}
-
-/** The drawing of papers is loaded only where one is wanted. */
-async function proposalOf({ outcome, contentHash, recordHash }: Told, sheet: PaperSheet): Promise<Uint8Array> {
-  const { renderProposal } = await import('#libs/proposal/render-proposal.js');
-  return renderProposal(outcome, {
-    number: contentHash.slice(0, 8),
-    revision: 0,
-    state: 'draft, not reviewed',
-    preparedBy: null,
-    contentHash,
-    recordHash,
-    engineVersion: ENGINE_VERSION,
-    date: outcome.site.asOf,
-    ...sheet,
-  });
-}
-
-function sha256(chunks: Iterable<string | Uint8Array>): string {
-  const hash = createHash('sha256');
-  for (const chunk of chunks) hash.update(chunk);
-  return hash.digest('hex');
 }

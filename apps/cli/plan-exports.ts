@@ -8,6 +8,8 @@ import { type ProposalTarget, proposalTarget } from './proposal-target.js';
 
 /** What is written of a plan besides its proposal. */
 export interface PlanExports {
+  /** whether anything is */
+  areWanted: boolean;
   /** @returns the files that were written */
   write(outcome: Outcome | EstimateOutcome): Promise<string[]>;
 }
@@ -39,6 +41,7 @@ export async function planExports({ values }: CommandLine): Promise<PlanExports>
   const folder = values.get('figures');
   if (folder !== undefined) await prepared(folder);
   return {
+    areWanted: tables.length > 0 || folder !== undefined,
     async write(outcome) {
       for (const one of tables) await writeTables(outcome, one);
       const figures = folder === undefined ? [] : await writeFigures(outcome, folder);

@@ -56,6 +56,7 @@ function megabytes(bytes: number): string {
   return `${value < 10 ? value.toFixed(1) : Math.round(value)} MB`;
 }
 
-function duration(seconds: number): string {
+/** A time left as a person says it. */
+export function duration(seconds: number): string {
   return seconds < 120 ? `${seconds} s` : `${Math.round(seconds / 60)} min`;
 }

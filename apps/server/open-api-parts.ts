@@ -38,6 +38,15 @@ const problem = {
   properties: { code: text, path: text, row: whole, column: whole, expected: text, found: text, unit: text },
 };
 
+const paperHead = {
+  id: text,
+  kind: { type: 'string', enum: ['tariff', 'prices'] },
+  name: text,
+  version: whole,
+  date: text,
+  createdAt: moment,
+};
+
 const revisionHead = {
   siteId: text,
   number: text,
@@ -78,6 +87,8 @@ export const ANSWER_SCHEMAS: Record<string, object> = {
     ...{ id: text, name: text, map: open, header: nullable(text), version: whole },
     ...{ createdAt: moment, updatedAt: moment },
   }),
+  KeptPaper: objectOf(paperHead),
+  KeptPaperInFull: objectOf({ ...paperHead, document: open }),
   Job: objectOf({
     ...{ id: whole, siteId: text, kind: text, attempt: whole, createdAt: moment, finishedAt: nullable(moment) },
     state: { type: 'string', enum: ['queued', 'running', 'done', 'failed', 'cancelled'] },
@@ -153,6 +164,7 @@ const record = `${site}/records/{recordId}`;
 const revision = `${site}/revisions/{revision}`;
 const job = '/api/jobs/{jobId}';
 const keptMaps = '/api/kept-maps';
+const papers = '/api/papers';
 const keptMap = `${keptMaps}/{keptMapId}`;
 
 export const OPEN_API_PARTS: Record<string, Part> = {
@@ -177,6 +189,11 @@ export const OPEN_API_PARTS: Record<string, Part> = {
     responses: { 200: json('The revisions.', objectOf({ records: listOf(schemaOf('LoadRecord')) })) },
   },
   [`post ${record}/revisions`]: extension,
+  [`get ${papers}`]: {
+    responses: { 200: json('Every version.', objectOf({ papers: listOf(schemaOf('KeptPaper')) })) },
+  },
+  [`post ${papers}`]: { responses: { 201: json('The version.', schemaOf('KeptPaperInFull')) } },
+  [`get ${papers}/{paperId}`]: { responses: { 200: json('The version.', schemaOf('KeptPaperInFull')) } },
   [`get ${keptMaps}`]: {
     responses: { 200: json('The kept answers.', objectOf({ keptMaps: listOf(schemaOf('KeptAnswers')) })) },
   },

@@ -32,6 +32,8 @@ async function describeRoutes(app: INestApplication): Promise<OpenAPIObject> {
     .setTitle('Varwright')
     .setDescription('Plans capacitor banks for power-factor correction, from the meter’s record to the proposal.')
     .setVersion('1')
+    .addBearerAuth({ type: 'http', scheme: 'bearer', description: 'an API key' }, 'key')
+    .addCookieAuth('varwright-session', { type: 'apiKey', description: 'a session' }, 'session')
     .build();
   const document = SwaggerModule.createDocument(app, about);
   document.components = {
@@ -47,7 +49,8 @@ async function describeRoutes(app: INestApplication): Promise<OpenAPIObject> {
     Object.assign(operation, part, {
       summary: declared?.does ?? '',
       ...(declared?.role ? { description: `Needs the role ${declared.role}, or one that may do more.` } : {}),
-      parameters: [...(operation.parameters ?? []), ...parameters],
+      ...(declared?.role ? { security: [{ key: [] }, { session: [] }] } : {}),
+      parameters: [...(operation.parameters ?? []), ...parameters, ...(method === 'POST' ? [ONCE] : [])],
       responses: { ...(responses ?? operation.responses), default: REFUSED },
     });
   }
@@ -57,6 +60,14 @@ async function describeRoutes(app: INestApplication): Promise<OpenAPIObject> {
   delete document.paths['/page/*'];
   return document;
 }
+
+const ONCE = {
+  in: 'header',
+  name: 'Idempotency-Key',
+  description: 'any key of the client’s own; the same request under it again is answered with the first answer',
+  required: false,
+  schema: { type: 'string', maxLength: 200 },
+};
 
 const REFUSED = {
   description: 'An error, naming what is wrong and where.',

@@ -28,6 +28,7 @@ import type { Confirm } from './people/confirm.js';
 import { PageController } from './page/page-controller.js';
 import { PageFiles } from './page/page-files.js';
 import { AccountPageController } from './people/account-page-controller.js';
+import { PapersController } from './papers/papers-controller.js';
 import { Accounts, type Reach } from './people/accounts.js';
 import { Admission } from './people/admission.js';
 import { Keys } from './people/keys.js';
@@ -82,6 +83,7 @@ const CONTROLLERS: ServerParts['controllers'] = [
   DifferencesController,
   VerifyController,
   KeptMapsController,
+  PapersController,
   ExportsController,
   SiteImportsController,
   JobsController,

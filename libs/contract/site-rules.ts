@@ -23,6 +23,7 @@ export function siteRules(site: Readable): RuleBreach[] {
     ...estimateRules(site),
     ...stateRules(site),
     ...priceRules(site),
+    ...paperRules(site),
     ...tariffRules(partAt(site, 'tariff')).map((breach) => ({ ...breach, path: ['tariff', ...breach.path] })),
   ];
 }
@@ -33,6 +34,15 @@ function voltageRules(site: Readable): RuleBreach[] {
   if (!(highestV < nominalV)) return [];
   const expected = `at least bus.nominalV, ${nominalV}`;
   return [{ code: 'inconsistent', path: ['bus', 'highestV'], expected, found: `${highestV}`, unit: 'V' }];
+}
+
+// A paper stands in for what the file does not hold.
+function paperRules(site: Readable): RuleBreach[] {
+  return ['tariff', 'prices'].flatMap((kind): RuleBreach[] => {
+    if (partAt(site, 'papers', kind) === undefined || partAt(site, kind) === undefined) return [];
+    const expected = `the name of a shared paper, or "${kind}" in the file itself`;
+    return [{ code: 'inconsistent', path: ['papers', kind], expected, found: 'both' }];
+  });
 }
 
 function supplyRules(site: Readable): RuleBreach[] {

@@ -6,6 +6,7 @@ import { estimateSchema } from './estimate-schema.js';
 import { financeSchema } from './finance-schema.js';
 import { limitsSchema } from './limits-schema.js';
 import { networkSchema } from './network-schema.js';
+import { sitePapersSchema } from './paper-schema.js';
 import { currentTransformerSchema, generatorRuleSchema, placeSchema } from './place-schema.js';
 import { pricesSchema } from './prices-schema.js';
 import {
@@ -96,6 +97,7 @@ const loads = z.strictObject({
   ).optional(),
   measured: z
     .strictObject({
+      use: z.enum(['check', 'fit']).optional(),
       place: label().optional(),
       loadKw: quantity('loadKw').optional(),
       bankKvar: quantity('bankKvar', NOT_NEGATIVE),
@@ -148,6 +150,7 @@ export const siteSchema = z
     bank: bankSchema.optional(),
     limits: limitsSchema.optional(),
     place: placeSchema.optional(),
+    papers: sitePapersSchema.optional().describe('shared tariff and prices, kept by the server'),
     tariff: tariffSchema.optional(),
     prices: pricesSchema.optional(),
     catalogue: catalogueSchema.optional(),

@@ -60,6 +60,14 @@ export const ASSUMPTION_MESSAGES: Messages = {
     'Harmonics of several loads add by {value}.',
     'The arithmetic sum is the severe end.',
   ),
+  'measured.fitted': assumed(
+    'The currents of the distorting loads at order {orderH} are taken {factor} times as stated, so that the model meets the reading to {residualPct}.',
+    'They are those of the hour of the reading: ask at what load of the plant it was taken, and whether every load was on.',
+  ),
+  'measured.keptOrders': assumed(
+    'Nothing was read at the orders {orders}: their currents are as stated.',
+    'Read them too, or compare with the data sheets of the loads.',
+  ),
   'loads.distorting.none': assumed(
     'It was declared that no load distorts.',
     'Walk the site: drives, rectifiers, welders, lighting.',

@@ -17,7 +17,8 @@ export const MEASURED_HEADS = [
  * @param measured of the result, with at least one row
  * @returns without a full stop
  */
-export function measuredFinding({ rows }: MeasuredCheck): string {
+export function measuredFinding({ rows, use }: MeasuredCheck): string {
+  if (use === 'fit') return 'the loads’ currents are fitted to it';
   const off = rows.filter(({ standing }) => standing !== 'within').length;
   return off === 0
     ? 'every reading lies within the model’s corners'
@@ -27,12 +28,13 @@ export function measuredFinding({ rows }: MeasuredCheck): string {
 /**
  * What has to be known beside the rows.
  * @param measured of the result
- * @returns two sentences
+ * @returns two sentences, or three
  */
-export function measuredNote({ levelKvar }: MeasuredCheck): string {
+export function measuredNote({ levelKvar, use }: MeasuredCheck): string {
   return (
-    `With ${formatQuantity(levelKvar, 'kvar')} connected. A reading checks the model and is never added to its ` +
-    'sources; it stands outside where it passes the corners by more than a tenth.'
+    `With ${formatQuantity(levelKvar, 'kvar')} connected. A reading is never added to the model’s sources; it stands ` +
+    'outside where it passes the corners by more than a tenth.' +
+    (use === 'fit' ? ' The loads’ currents were scaled to meet it, so that agreement is no check of the model.' : '')
   );
 }
 

@@ -37,6 +37,16 @@ export const MONEY_MESSAGES: Messages = {
     text: 'Maintenance and replacements grow by {value} a year.',
     consequence: 'Take a rate that both sides can stand by.',
   },
+  'papers.tariff': {
+    level: 'to be noted',
+    text: 'The tariff is the shared paper “{name}”, version {version}, which holds from {date}.',
+    consequence: 'A later version changes nothing here until the site is planned again.',
+  },
+  'papers.prices': {
+    level: 'to be noted',
+    text: 'The prices are the shared paper “{name}”, version {version}, which holds from {date}.',
+    consequence: 'A later version changes nothing here until the site is planned again.',
+  },
   'prices.invented': {
     level: 'to be accepted',
     text: 'The price book is made up: it shows how costs are reckoned, not what anything costs.',

@@ -17,6 +17,7 @@ import { Milestone } from './milestone.js';
 import { Organisation } from './organisation.js';
 import { Person } from './person.js';
 import { PersonSession } from './person-session.js';
+import { Paper } from './paper.js';
 import { ProposalFile } from './proposal-file.js';
 import { RecordColumn } from './record-column.js';
 import { ReviewStanding } from './review-standing.js';
@@ -28,7 +29,7 @@ import { StoredSite } from './stored-site.js';
 const ENTITIES = [
   ...[Organisation, Person, PersonSession, ApiKey, RevisionLink, KeptAnswer],
   ...[StoredSite, StoredRecord, RecordColumn, Revision, ProposalFile, Job, Milestone, KeptMap],
-  ...[AuditEntry, ReviewStanding, IssuedPaper],
+  ...[AuditEntry, ReviewStanding, IssuedPaper, Paper],
 ];
 const BUSY_MS = 5000;
 

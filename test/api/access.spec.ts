@@ -29,6 +29,7 @@ const BODIES: Asking['bodies'] = {
   [`PUT ${SITE}`]: { body: siteFile() },
   [`POST ${SITE}/records`]: csv,
   [`POST ${SITE}/records/:recordId/revisions`]: csv,
+  'POST /api/site-imports': csv,
   'POST /api/verify': { body: 'x', type: 'application/pdf' },
   'PUT /api/kept-maps/:keptMapId': { body: { name: 'x', map: {} } },
   // Asked to wait for ever, it is refused once the revision was found, before it computes.
@@ -75,8 +76,10 @@ async function furnish(server: TestServer, headers: Record<string, string>, name
   let status = 202;
   while (status === 202) status = (await ask('POST', `/api/sites/${siteId}/plans?wait=60`, {})).status;
   const keptMapId = (await ask('POST', '/api/kept-maps', { name: `${name} meter`, map: {} })).body.id;
+  const tariff = { kind: 'tariff', name: `${name} tariff`, date: '2026-01-01', document: {} };
+  const paperId = (await ask('POST', '/api/papers', tariff)).body.id;
   const link = (await ask('POST', `/api/sites/${siteId}/revisions/1/links`, {})).body;
-  return { siteId, recordId, revision: '1', other: '1', jobId, keptMapId, linkId: link.id };
+  return { siteId, recordId, revision: '1', other: '1', jobId, keptMapId, paperId, linkId: link.id };
 }
 
 describe('who may do what', () => {
@@ -110,7 +113,7 @@ describe('who may do what', () => {
       ) as World['headers'],
       secrets: [
         ...['Southgate', 'of south', theirs.administrator.id, theirKey],
-        ...[foreign.siteId!, foreign.recordId!, foreign.keptMapId!, foreign.linkId!],
+        ...[foreign.siteId!, foreign.recordId!, foreign.keptMapId!, foreign.paperId!, foreign.linkId!],
       ],
     };
   }, 180_000);
@@ -162,7 +165,7 @@ describe('who may do what', () => {
     expect(new Set(cells.map(({ route }) => route)).size).toBe(guarded.length);
     expect(cells.length).toBeGreaterThan(guarded.length * 5);
     expect(await walk(server, cells)).toEqual([]);
-  });
+  }, 300_000);
 
   it('shows in no list and no count what another organisation has', async () => {
     const get = async (path: string) => (await server.ask('GET', path, undefined, world.headers.administrator)).body;

@@ -62,7 +62,7 @@ describe.runIf(CHROMIUM !== null)('every page, by the automated rules of accessi
   });
 });
 
-/** Opens an address and, where it has figures, the table and the working of the first. */
+/** Opens an address and all that is folded away; where it has figures, the table and the working of the first. */
 async function unfold(page: Page, address: string): Promise<void> {
   await page.goto(address);
   const shown = STATIONS_SHOWN[address.split('/').at(-1) ?? ''] ?? /site/i;
@@ -71,4 +71,5 @@ async function unfold(page: Page, address: string): Promise<void> {
     const toggle = page.getByRole('button', { name, exact: true }).first();
     if (await toggle.isVisible()) await toggle.click();
   }
+  await page.evaluate('document.querySelectorAll("details").forEach((part) => { part.open = true; })');
 }

@@ -44,6 +44,8 @@ describe.runIf(CHROMIUM !== null)('the whole job, from an empty database to a do
     await page.getByRole('heading', { name: 'Drop a meter file' }).waitFor();
     await page.locator('input[type=file]').setInputFiles(METER_FILE);
     await page.getByRole('heading', { name: /A year of readings in steps of 15.min, without a gap/ }).waitFor();
+    await page.getByRole('heading', { name: /A first look: .* to hold 0\.95/ }).waitFor();
+    await page.getByText('active (kW)').first().waitFor();
 
     await station(page, 'Supply').click();
     await page.getByRole('button', { name: 'Add a load' }).click();

@@ -57,12 +57,12 @@ export function accessCells(routes: readonly Route[], world: World): Cell[] {
 type Target = Pick<Cell, 'target' | 'path' | 'asNothing'> & { mayPass: boolean };
 
 function targetsOf({ path }: Route, { ours, otherSiteId, theirs }: World, role: Role): Target[] {
-  const names = [...path.matchAll(/:(\w+)/g)].map(([, name]) => name!);
+  const names = [...path.matchAll(/:(\w+)/g)].flatMap(([, name]) => (name === 'file' ? [] : [name!]));
   const own = ours(role);
   const target = (name: string, ids: Ids, nothing: Ids | null): Target => ({
     target: name,
-    path: filled(path, ids),
-    asNothing: nothing === null ? null : filled(path, nothing),
+    path: filled(path, { file: fileOf(path), ...ids }),
+    asNothing: nothing === null ? null : filled(path, { file: fileOf(path), ...nothing }),
     mayPass: nothing === null,
   });
   if (names.length === 0) return [target('none', {}, null)];
@@ -79,6 +79,12 @@ function targetsOf({ path }: Route, { ours, otherSiteId, theirs }: World, role: 
     targets.push(target('own site, other organisation’s part', { ...own, [last]: theirs[last]! }, nowhere));
   }
   return targets;
+}
+
+/** A file that every object of the kind can be had as. */
+function fileOf(path: string): string {
+  if (path.includes('/records/')) return 'record.json';
+  return path.includes('/revisions/') ? 'plan.json' : 'site.json';
 }
 
 const nothing = (name: string) => (NUMBERS.includes(name) ? '987654' : randomUUID());

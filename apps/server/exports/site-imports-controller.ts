@@ -7,6 +7,7 @@ import { InputProblem } from '#libs/engine/index.js';
 import { isDocumentRows, readDocumentRows } from '#libs/meter-files/site-document.js';
 import { insertSite } from '#libs/store/sites.js';
 import { Store } from '#libs/store/store.js';
+import { Once, replayed } from '../once/once.js';
 import { actorOf } from '../people/actor.js';
 import { Needs } from '../people/needs.js';
 import { tagOf } from '../sites/version-tag.js';
@@ -17,7 +18,10 @@ const MOST_BYTES = 1_000_000;
 /** A site file that was exported as text or workbook, taken back. JSON goes to the sites themselves. */
 @Controller('api/site-imports')
 export class SiteImportsController {
-  constructor(private readonly store: Store) {}
+  constructor(
+    private readonly store: Store,
+    private readonly once: Once,
+  ) {}
 
   @Post()
   @Needs('planner', 'Adds a site from its file as site.csv or site.xlsx; the body is the file.')
@@ -29,6 +33,8 @@ export class SiteImportsController {
       throw new InputProblem([{ code: 'unknown-format', expected, found: 'another file' }]);
     }
     const document = (await readDocumentRows(bytes)) as object;
+    const answered = await this.once.begin(request, document);
+    if (answered !== null) return JSON.parse(replayed(reply, answered)) as object;
     const { name } = await readSiteWithMathjs(document);
     const site = await this.store.write((manager) =>
       insertSite(manager, { id: randomUUID(), organisationId, name, document }, new Date()),

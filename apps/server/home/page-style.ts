@@ -39,21 +39,15 @@ th { text-align: left; font-weight: 400; }
 thead th { color: var(--soft); font-size: 13px; }
 td, thead th + th { text-align: right; }
 th, td { padding: 4px 8px 4px 0; border-bottom: 1px solid var(--hair); }
-form { max-width: 420px; margin: 16px 0; }
 .field { margin: 12px 0; }
 .field label { display: block; font-size: 13px; line-height: 18px; color: var(--soft); }
 .field small { display: block; color: var(--soft); font-size: 13px; }
-input, select { font: inherit; color: inherit; background: none; border: 0; border-bottom: 1px solid var(--soft);
-  width: 100%; min-height: 36px; padding: 4px 0; border-radius: 0; }
 select option { background: var(--sheet); }
-button { font: inherit; font-weight: 600; color: var(--sheet); background: var(--ink); border: 0; min-height: 40px;
-  padding: 6px 20px; cursor: pointer; }
-button.quiet { color: inherit; background: none; border: 1px solid var(--soft); font-weight: 400; min-height: 32px; padding: 2px 12px; }
-input:focus-visible, select:focus-visible, button:focus-visible { outline: 3px solid var(--ink); outline-offset: 3px; }
 .people { max-width: 720px; }
-.people td { text-align: left; }
+.people td, .people thead th { text-align: left; }
 .people form { margin: 0; }
 .alert { border-left: 5px solid var(--avoid); padding: 4px 12px; max-width: 620px; }
+.shown-once { border-left: 5px solid var(--ink); padding: 4px 12px; overflow-wrap: anywhere; }
 .links { list-style: none; padding: 0; display: flex; flex-wrap: wrap; gap: 4px 24px; }
 .links a { padding: 9px 0; }
 form[data-act], form[id] { max-width: 640px; }

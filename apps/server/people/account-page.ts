@@ -36,7 +36,7 @@ ${passwordField('password', 'New password, at least 12 characters', 'new-passwor
 </form></section>`,
     html`<section aria-labelledby="keys"><h2 id="keys">API keys</h2>
 <p>A program that has a key acts in your name, with at most your role.</p>
-${made === null ? null : html`<p role="status" class="alert">The new key is shown this once: <code>${made}</code></p>`}
+${made === null ? null : html`<p role="status" class="shown-once">The new key is shown this once: <code>${made}</code></p>`}
 ${keys.length === 0 ? null : keyTable(keys)}
 <form method="post" action="/account/keys">
 ${textField('name', 'What the key is for', { required: true, longest: 80 })}
@@ -52,11 +52,11 @@ function keyTable(keys: readonly ApiKey[]): Html {
     ({ id, name, role, createdAt, expiresAt, revokedAt }) =>
       html`<tr><th scope="row">${name}</th><td>${role}</td><td>${day(createdAt)}</td><td>${expiresAt === null ? '–' : day(expiresAt)}</td><td>${
         revokedAt === null
-          ? html`<form method="post" action="/account/keys/${id}/revoke"><button type="submit" class="quiet" aria-label="Revoke the key ${name}">Revoke</button></form>`
+          ? html`<form method="post" action="/account/keys/${id}/revoke"><button type="submit" aria-label="Revoke the key ${name}">Revoke</button></form>`
           : `revoked ${day(revokedAt)}`
       }</td></tr>`,
   );
-  const head = ['for', 'role', 'made', 'expires', ''].map((text) => html`<th scope="col">${text}</th>`);
+  const head = ['for', 'role', 'made', 'expires', 'state'].map((text) => html`<th scope="col">${text}</th>`);
   return html`<table class="people"><caption>Your keys; an administrator sees everybody’s.</caption><thead><tr>${head}</tr></thead><tbody>${rows}</tbody></table>`;
 }
 

@@ -26,7 +26,7 @@ ${textField('name', 'Name, as it stands under their work', { required: true, lon
 ${textField('signInName', 'Sign-in name', { required: true, longest: 80 })}
 ${isFirst ? html`<input type="hidden" name="role" value="administrator">` : roleField('viewer')}
 ${passwordField('password', 'Password, at least 12 characters', 'new-password')}
-<p><button type="submit">Open the account</button></p>
+<p><button type="submit" class="main">Open the account</button></p>
 </form></section>`,
   ]);
 }
@@ -67,13 +67,13 @@ ${fields}
       'change',
       html`${textField('name', 'Name, as it stands under their work', { required: true, longest: 200, value: name })}
 ${roleField(role)}`,
-      html`<button type="submit">Change</button>`,
+      html`<button type="submit" class="main">Change</button>`,
     ),
     html`<section aria-labelledby="other"><h2 id="other">Another password</h2>
 ${form('password', passwordField('password', 'Password, at least 12 characters', 'new-password'), html`<button type="submit">Set the password</button>`)}</section>
 <section aria-labelledby="end"><h2 id="end">Close the account</h2>
 <p>Its sessions end and its keys are revoked; what was done under the name keeps it. A closed account is not opened again.</p>
-${form('close', html``, html`<button type="submit" class="quiet">Close the account of ${name}</button>`)}</section>
+${form('close', html``, html`<button type="submit">Close the account of ${name}</button>`)}</section>
 <p><a href="/people">All people</a></p>`,
   ]);
 }

@@ -17,7 +17,7 @@ export function signInPage(refused: string | null): string {
 <input id="signInName" name="signInName" required maxlength="80" autocomplete="username" autocapitalize="none" spellcheck="false"></p>
 <p class="field"><label for="password">Password</label>
 <input id="password" name="password" type="password" required maxlength="200" autocomplete="current-password"></p>
-<p><button type="submit">Sign in</button></p>
+<p><button type="submit" class="main">Sign in</button></p>
 </form>`,
   );
 }

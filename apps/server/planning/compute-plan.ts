@@ -16,6 +16,7 @@ import {
   withRobustness,
   type ZoneTable,
 } from '#libs/engine/index.js';
+import { partOfWatch } from '#libs/jobs/pool/part-of-watch.js';
 import { portWatch } from '#libs/jobs/pool/port-watch.js';
 import { packAnswer, type WorkerAnswer } from '#libs/jobs/pool/worker-answer.js';
 import { bankName, estimateWords, proposedWords } from '#libs/present/proposed-words.js';
@@ -35,6 +36,10 @@ export interface PlanTask {
   zone: ZoneTable;
   frame: ProposalFrame;
 }
+
+/** Shares of the whole at which planning, and weighing with the inputs moved, are done; the paper is drawn in the rest. */
+const PLANNED = 0.6;
+const FIRM = 0.95;
 
 export interface PlanValue {
   result: Result | EstimateResult;
@@ -61,7 +66,8 @@ export function computePlan({ task, port }: { task: PlanTask; port: MessagePort 
 function byRecord(task: PlanTask, record: LoadRecord, watch: Watch): Outcome {
   if (recordHash(record) !== task.recordHash) throw new Error('the stored record is not the one that was hashed');
   const judge = task.kind === 'plan' ? planBank : assessBank;
-  const computed = withRobustness(judge(task.site, record, task.zone, watch));
+  const planned = judge(task.site, record, task.zone, partOfWatch(watch, 0, PLANNED));
+  const computed = withRobustness(planned, partOfWatch(watch, PLANNED, FIRM));
   return { ...computed, result: putInWords(computed.result) };
 }
 

@@ -4,7 +4,6 @@ import { estimateZone } from '#libs/contract/estimate-zone.js';
 import { frozenSite } from '#libs/contract/frozen-site.js';
 import { planContent } from '#libs/contract/plan-content.js';
 import type { PlanRequest } from '#libs/contract/plan-request-schema.js';
-import { readSiteWithMathjs } from '#libs/contract/read-site-with-mathjs.js';
 import { zoneTableOf } from '#libs/contract/time-zone.js';
 import { ENGINE_VERSION, InputProblem } from '#libs/engine/index.js';
 import type { Jobs } from '#libs/jobs/jobs.js';
@@ -15,6 +14,7 @@ import { Revision } from '#libs/store/revision.js';
 import { Store } from '#libs/store/store.js';
 import { StoredRecord } from '#libs/store/stored-record.js';
 import type { StoredSite } from '#libs/store/stored-site.js';
+import { siteWithPapers } from '../papers/site-with-papers.js';
 import { findRecord } from '../records/find-record.js';
 import { JOBS } from '../tokens.js';
 import type { FrozenPlan } from './plan-request.js';
@@ -34,7 +34,8 @@ export class Planning {
    * @throws InputProblem where the site, the record or the bank to judge is missing
    */
   async ask(kind: FrozenPlan['kind'], stored: StoredSite, request: PlanRequest, by?: Person): Promise<Revision | Job> {
-    const site = frozenSite(await readSiteWithMathjs(stored.document), Date.now() / 1000);
+    const whole = await siteWithPapers(this.store, stored, request.papers);
+    const site = frozenSite(whole, Date.now() / 1000);
     if (kind === 'assess' && site.bank === undefined) {
       throw new InputProblem([{ code: 'missing', path: 'bank', expected: 'the bank to judge', found: 'nothing' }]);
     }

@@ -66,6 +66,15 @@ export interface RevisionShown extends RevisionHeadShown {
   result: Result | EstimateResult;
 }
 
+/** Where the review of a revision stands, as much of it as the page tells. */
+export interface ReviewShown {
+  stateText: string;
+  /** what its issue still waits for */
+  open: string[];
+  log: { sequence: number; at: string; by: { name: string }; text: string }[];
+  links: { approved: string | null };
+}
+
 /** A job as the API gives it. */
 export interface JobShown {
   id: number;

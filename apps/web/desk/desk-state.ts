@@ -6,7 +6,15 @@ import {
   tanFromPowerFactor,
 } from '#libs/engine/index.js';
 import type { Station } from '../address.js';
-import type { JobShown, RecordShown, RevisionHeadShown, RevisionShown, SiteDocument, SiteShown } from '../api/shown.js';
+import type {
+  JobShown,
+  RecordShown,
+  ReviewShown,
+  RevisionHeadShown,
+  RevisionShown,
+  SiteDocument,
+  SiteShown,
+} from '../api/shown.js';
 import { valueAt } from '../field/document-path.js';
 import type { Look, Picks, StationCharts } from './look.js';
 
@@ -21,6 +29,8 @@ export interface DeskState {
   records: RecordShown[];
   revisions: RevisionHeadShown[];
   kept: RevisionShown | null;
+  /** of the kept revision */
+  review: ReviewShown | null;
   /** what the engine says of the document as typed */
   look: Look | null;
   charts: StationCharts;
@@ -49,6 +59,7 @@ export const NOTHING_YET: DeskState = {
   records: [],
   revisions: [],
   kept: null,
+  review: null,
   look: null,
   charts: {},
   picks: { momentS: null, cursorS: 11 * 3600 + 900, levelKvar: null },

@@ -1,7 +1,7 @@
 import type { BankInput, Problem } from '#libs/engine/index.js';
 import type { Station } from '../address.js';
 import { ask, NoConnection, Refused } from '../api/ask.js';
-import type { RecordShown, RevisionHeadShown, RevisionShown, SiteShown } from '../api/shown.js';
+import type { RecordShown, ReviewShown, RevisionHeadShown, RevisionShown, SiteShown } from '../api/shown.js';
 import { withValueAt } from '../field/document-path.js';
 import { clockNow } from './clock-now.js';
 import { InputRefused } from './desk-link.js';
@@ -178,7 +178,8 @@ export class SiteDesk {
     const { revisions } = (await ask<{ revisions: RevisionHeadShown[] }>(`${this.#path()}/revisions`)).body;
     const latest = revisions[0];
     const kept = latest === undefined ? null : (await ask<RevisionShown>(latest.links.self)).body;
-    this.#set({ records, revisions, kept, offlineSince: null });
+    const review = latest === undefined ? null : (await ask<ReviewShown>(`${latest.links.self}/review`)).body;
+    this.#set({ records, revisions, kept, review, offlineSince: null });
     if (kept === null && records.length > 0 && !this.#closed) setTimeout(() => this.#lookAgain(), FIRST_PLAN_MS);
   }
 

@@ -116,12 +116,12 @@ function SiteTitle() {
 
 function KeptState() {
   const { state } = useDesk();
-  const { kept, job, offlineSince, saving } = state;
+  const { kept, review, job, offlineSince, saving } = state;
   if (offlineSince !== null) return `No connection since ${offlineSince}`;
   if (job !== null) return `computing, ${Math.round(100 * job.progress)}\u00a0% done`;
   if (saving) return 'saving';
   if (isChanged(state)) return 'changed, not kept yet';
-  return kept === null ? 'no revision yet' : `revision ${kept.revision}, draft`;
+  return kept === null ? 'no revision yet' : `revision ${kept.revision}, ${review?.stateText ?? 'kept'}`;
 }
 
 function KeepWays() {

@@ -130,8 +130,8 @@ const FIGURES: Record<Station, (state: DeskState) => { figure: ReactNode; third:
       third: 'a year, estimated',
     };
   },
-  proposal: ({ kept }) =>
+  proposal: ({ kept, review }) =>
     kept === null
       ? { figure: 'none yet', third: 'plan first' }
-      : { figure: <b>Rev. {kept.revision}</b>, third: 'draft' },
+      : { figure: <b>Rev. {kept.revision}</b>, third: review?.stateText ?? 'kept' },
 };

@@ -1,7 +1,7 @@
 import { formatQuantity, inShownMark } from '#libs/present/format-number.js';
-import { NO_PERMISSION } from '#libs/present/verdict-words.js';
 import { STATE_WORDS } from '#libs/present/review-words.js';
-import type { RevisionHeadShown } from '../api/shown.js';
+import { NO_PERMISSION } from '#libs/present/verdict-words.js';
+import type { RevisionHeadShown, RevisionShown } from '../api/shown.js';
 import { isChanged, staleFrom } from '../desk/desk-state.js';
 import { useDesk } from '../desk/use-desk.js';
 import { ScrollTable } from '../draw/scroll-table.js';
@@ -9,11 +9,12 @@ import { VerdictWords } from '../draw/verdict-mark.js';
 import { valueAt } from '../field/document-path.js';
 import { Headline } from '../working/headline.js';
 import { FindingsList } from './findings-list.js';
+import { ReviewState } from './review-state.js';
 
 /** The paper: preview, download, what changed since the last one. */
 export function ProposalSheet() {
   const { desk, state } = useDesk();
-  const { kept, revisions, records, job, saving } = state;
+  const { kept, records, job, saving } = state;
   const canPlan = records.length > 0 || valueAt(state.document, 'estimate') !== undefined;
   if (kept === null) {
     return (
@@ -38,6 +39,13 @@ export function ProposalSheet() {
       </>
     );
   }
+  return <KeptPaper kept={kept} />;
+}
+
+/** The paper of the latest revision, its review, its findings, and every revision before it. */
+function KeptPaper({ kept }: { kept: RevisionShown }) {
+  const { state } = useDesk();
+  const { revisions, review } = state;
   const { number, revision, proposed, verdict, links } = kept;
   const isOlder = isChanged(state) || staleFrom(state) !== null;
   return (
@@ -45,7 +53,7 @@ export function ProposalSheet() {
       <Headline
         figures={[
           { value: kept.result.bank.effectiveKvar, unit: 'kvar', under: 'effective', id: 'bank.effectiveKvar' },
-          { value: revision, under: `revision, ${stateOf(revisions, revision)}`, digits: 'given' },
+          { value: revision, under: `revision, ${review?.stateText ?? 'kept'}`, digits: 'given' },
         ]}
       >
         {kept.kind === 'plan' ? 'Proposed' : 'Judged'}: {inShownMark(proposed)}
@@ -57,7 +65,8 @@ export function ProposalSheet() {
       ) : null}
       <section className="section" aria-labelledby="paper">
         <h2 id="paper">
-          Proposal {number}, revision {revision}: {stateOf(revisions, revision)}
+          Proposal {number}, revision {revision}
+          {review === null ? '' : `: ${review.stateText}`}
         </h2>
         <p className="row gap">
           <VerdictWords verdict={verdict} />
@@ -70,7 +79,6 @@ export function ProposalSheet() {
           <a href={links.proposal} target="_blank" rel="noreferrer">
             Open it beside this page
           </a>
-          <a href={reviewOf(kept)}>Review and approval</a>
         </p>
         <iframe
           className="paper no-print"
@@ -78,6 +86,7 @@ export function ProposalSheet() {
           title={`Proposal ${number}, revision ${revision}`}
         />
       </section>
+      {review === null ? null : <ReviewState kept={kept} review={review} />}
       <FindingsList />
       <Changes revisions={revisions} />
       <section className="section" aria-labelledby="papers">
@@ -86,16 +95,6 @@ export function ProposalSheet() {
       </section>
     </>
   );
-}
-
-/** Where a revision stands in its review, in words. */
-function stateOf(revisions: readonly RevisionHeadShown[], revision: number): string {
-  return STATE_WORDS[revisions.find((one) => one.revision === revision)?.state ?? 'draft'];
-}
-
-/** The page of a revision's review. */
-function reviewOf({ siteId, revision }: Pick<RevisionHeadShown, 'siteId' | 'revision'>): string {
-  return `/sites/${siteId}/revisions/${revision}/review`;
 }
 
 function Revisions({ revisions }: { revisions: readonly RevisionHeadShown[] }) {
@@ -122,7 +121,7 @@ function Revisions({ revisions }: { revisions: readonly RevisionHeadShown[] }) {
               <VerdictWords verdict={one.verdict} />
             </td>
             <td>
-              <a href={reviewOf(one)}>{STATE_WORDS[one.state ?? 'draft']}</a>
+              <a href={`/sites/${one.siteId}/revisions/${one.revision}/review`}>{STATE_WORDS[one.state ?? 'draft']}</a>
             </td>
             <td>
               <a href={one.links.proposal}>PDF</a>

@@ -25,6 +25,8 @@ export interface MeasuredRow {
 /** A measurement beside the model. */
 export interface MeasuredCheck {
   bus: string;
+  /** "fit": the loads' currents were scaled to meet it, and agreement is no check */
+  use: 'check' | 'fit';
   /** the level that was compared; null where the bank has none within half a kvar */
   levelKvar: number | null;
   rows: MeasuredRow[];
@@ -56,7 +58,12 @@ export function measuredCheck(
   const found = measured.place === undefined ? model.bankBus : model.buses.indexOf(measured.place);
   const bus = found < 0 ? model.bankBus : found;
   const level = levels.find(({ levelKvar }) => Math.abs(levelKvar - measured.bankKvar) <= LEVEL_REACH_KVAR);
-  const check: MeasuredCheck = { bus: model.buses[bus]!, levelKvar: level?.levelKvar ?? null, rows: [] };
+  const check: MeasuredCheck = {
+    bus: model.buses[bus]!,
+    use: measured.use ?? 'check',
+    levelKvar: level?.levelKvar ?? null,
+    rows: [],
+  };
   if (level === undefined) return check;
   const ranges = new Ranges(model, bus);
   eachFlow(model, bankModel(model, bank, [level]), (flow) => ranges.take(flow));

@@ -41,8 +41,10 @@ export interface FastLoad {
   swingS?: number;
 }
 
-/** What an instrument read on the working site; it checks the model and is never summed with the sources. */
+/** What an instrument read on the working site; it is never summed with the sources. */
 export interface MeasuredDistortion {
+  /** holds the reading against the model, or scales the loads' currents until the model meets it; "check" where absent */
+  use?: 'check' | 'fit';
   /** bus it was read at; the bank's where absent */
   place?: string;
   /** active power while it was read [kW] */
@@ -68,6 +70,12 @@ export interface LoadsInput {
   measured?: MeasuredDistortion;
 }
 
+/** What the currents of all loads at one order are multiplied by. */
+export interface OrderFactor {
+  orderH: number;
+  factor: number;
+}
+
 /** The loads with defaults filled in; null lists are unknown. */
 export interface Loads {
   motorSharePct: number;
@@ -75,4 +83,6 @@ export interface Loads {
   backgroundPct: OrderPct[] | null;
   dampingKw: { max: number; min: number };
   summation: 'exponent' | 'arithmetic';
+  /** fitted to a reading; 1 where absent */
+  factors?: readonly OrderFactor[];
 }

@@ -46,7 +46,8 @@ function currentsByOrder(loads: Loads): Map<number, number[]> {
   const found = new Map<number, number[]>();
   for (const load of loads.distorting ?? []) {
     for (const { orderH, pct, angleDeg } of injectedOrders(load)) {
-      const a = (load.fundamentalA * pct) / 100;
+      const factor = loads.factors?.find((of) => of.orderH === orderH)?.factor ?? 1;
+      const a = (factor * load.fundamentalA * pct) / 100;
       if (angleDeg === undefined) {
         found.set(orderH, [...(found.get(orderH) ?? []), a]);
         continue;

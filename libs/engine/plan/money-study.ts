@@ -37,6 +37,7 @@ export function moneyStudy(study: Study, site: Site): MoneyStudy | null {
     prices,
     finance,
     assumptions: [
+      ...paperLines(site),
       ...tariffLines(site, prepared),
       ...(prices === null ? [] : absent.map((key) => financeLine(key, finance[key]))),
       ...priceLines(site),
@@ -45,6 +46,15 @@ export function moneyStudy(study: Study, site: Site): MoneyStudy | null {
       remark('money.sameLoad'),
     ],
   };
+}
+
+// Shared papers that were looked up: which version, and from when it holds.
+function paperLines({ papers }: Site): Remark[] {
+  return (['tariff', 'prices'] as const).flatMap((kind) => {
+    const { name, version, date } = papers?.[kind] ?? {};
+    if (name === undefined || version === undefined || date === undefined) return [];
+    return [remark(`papers.${kind}`, { name, version, date }, { path: `papers.${kind}` })];
+  });
 }
 
 function tariffLines(site: Site, prepared: PreparedTariff): Remark[] {

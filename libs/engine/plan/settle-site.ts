@@ -7,6 +7,7 @@ import { InputProblem, type Problem, type Remark, remark } from '../problem.js';
 import { compensatedSum } from '../quantity/compensated-sum.js';
 import type { LoadRecord } from '../record/load-record.js';
 import type { Supply, SupplyInput } from '../supply/supply.js';
+import { fittedLoads } from './fitted-loads.js';
 import { loadProblems } from './load-problems.js';
 import { moneyPapers } from './money-papers.js';
 import { settleBank } from './settle-bank.js';
@@ -93,7 +94,10 @@ export function settleSite(site: Site, record: LoadRecord | null): Settled {
   }
   if (site.recordedBank === undefined) defaults.note('default.recordedBank', 'recordedBank', {});
   if (!hasTransformer) defaults.note('supply.noTransformer', 'supply.transformers', {});
-  return { site: settled, assumptions: [...defaults.assumptions, ...understood(site)] };
+  const { measured } = settled.facts;
+  const fitted = measured?.use === 'fit' ? fittedLoads(site, settled, measured) : null;
+  if (fitted !== null) settled.loads = fitted.loads;
+  return { site: settled, assumptions: [...defaults.assumptions, ...(fitted?.lines ?? []), ...understood(site)] };
 }
 
 // What stood in another form is echoed as it was understood.

@@ -37,6 +37,21 @@ export interface Understood {
   unit: string;
 }
 
+/** A shared paper that a site refers to; version and date are known once it was looked up. */
+export interface PaperReference {
+  name: string;
+  /** the latest where absent */
+  version?: number;
+  /** local date from which the paper holds, "2026-01-01" */
+  date?: string;
+}
+
+/** Where a site's tariff and prices come from, if they do not stand in its file. */
+export interface SitePapers {
+  tariff?: PaperReference;
+  prices?: PaperReference;
+}
+
 /** The site file once it is validated: plain numbers in the unit of each name; optional parts as given. */
 export interface Site {
   name: string;
@@ -60,6 +75,7 @@ export interface Site {
   limits?: LimitsInput;
   /** where the bank stands */
   place?: BankPlace;
+  papers?: SitePapers;
   tariff?: Tariff;
   prices?: PriceBook;
   catalogue?: CatalogueInput;

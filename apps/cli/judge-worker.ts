@@ -1,0 +1,111 @@
+// The thread that plans and judges: the program's own stays free to say how far it is, and to hear an interruption.
+import { createHash } from 'node:crypto';
+import type { MessagePort } from 'node:worker_threads';
+import { planContent } from '#libs/contract/plan-content.js';
+import { recordBytes } from '#libs/contract/record-hash.js';
+import {
+  assessBank,
+  assessEstimate,
+  ENGINE_VERSION,
+  type EstimateOutcome,
+  type EstimateResult,
+  isEstimate,
+  type LoadRecord,
+  type Outcome,
+  planBank,
+  planEstimate,
+  type Result,
+  type Site,
+  type Watch,
+  withRobustness,
+  type ZoneTable,
+} from '#libs/engine/index.js';
+import { partOfWatch } from '#libs/jobs/pool/part-of-watch.js';
+import { portWatch } from '#libs/jobs/pool/port-watch.js';
+import { packAnswer, type WorkerAnswer } from '#libs/jobs/pool/worker-answer.js';
+import { putEstimateInWords, putInWords } from '#libs/present/put-in-words.js';
+import { type SiteRow, siteRow } from '#libs/present/sites-table.js';
+import { estimateReport, resultReport } from '#libs/present/terminal-report.js';
+import type { PaperSheet } from './paper-sheet.js';
+
+/** A site to plan or judge. */
+export interface JudgeTask {
+  kind: Outcome['kind'];
+  site: Site;
+  /** null where the site's own estimate stands in for it */
+  record: LoadRecord | null;
+  zone: ZoneTable;
+  /** null where no proposal is wanted */
+  sheet: PaperSheet | null;
+  /** the answer in full is sent back, to be written out in other forms */
+  wantsOutcome: boolean;
+}
+
+/** An answer in words, with what prints it. */
+export interface Judged {
+  result: Result | EstimateResult;
+  report: string;
+  row: SiteRow;
+  proposal: Uint8Array | null;
+  outcome: Outcome | EstimateOutcome | null;
+}
+
+/** Shares of the whole at which planning, and weighing with the inputs moved, are done. */
+const PLANNED = 0.6;
+const FIRM = 0.95;
+
+/** Plans or judges a site, puts the answer in words and draws its proposal where one is wanted. */
+export function judgeTask({ task, port }: { task: JudgeTask; port: MessagePort }): Promise<WorkerAnswer<Judged>> {
+  return packAnswer(async () => {
+    const watch = portWatch(port);
+    const outcome = task.record === null ? byEstimate(task, watch) : byRecord(task, task.record, watch);
+    return {
+      result: outcome.result,
+      report: isEstimate(outcome) ? estimateReport(outcome) : resultReport(outcome),
+      row: siteRow(outcome),
+      proposal: task.sheet === null ? null : await proposalOf(outcome, task, task.sheet),
+      outcome: task.wantsOutcome ? outcome : null,
+    };
+  });
+}
+
+function byRecord({ kind, site, zone }: JudgeTask, record: LoadRecord, watch: Watch): Outcome {
+  const judge = kind === 'plan' ? planBank : assessBank;
+  const planned = judge(site, record, zone, partOfWatch(watch, 0, PLANNED));
+  const computed = withRobustness(planned, partOfWatch(watch, PLANNED, FIRM));
+  return { ...computed, result: putInWords(computed.result) };
+}
+
+function byEstimate({ kind, site, zone }: JudgeTask, watch: Watch): EstimateOutcome {
+  const judge = kind === 'plan' ? planEstimate : assessEstimate;
+  const computed = withRobustness(judge(site, zone), partOfWatch(watch, 0, FIRM));
+  return { ...computed, result: putEstimateInWords(computed.result) };
+}
+
+/** The drawing of papers is loaded only where one is wanted. */
+async function proposalOf(
+  outcome: Outcome | EstimateOutcome,
+  { kind, site, record, zone }: JudgeTask,
+  sheet: PaperSheet,
+): Promise<Uint8Array> {
+  const { renderProposal } = await import('#libs/proposal/render-proposal.js');
+  const recordHash = record === null ? null : sha256(recordBytes(record));
+  const contentHash = sha256([planContent({ kind, site, recordHash, zone, engineVersion: ENGINE_VERSION })]);
+  return renderProposal(outcome, {
+    number: contentHash.slice(0, 8),
+    revision: 0,
+    state: 'draft, not reviewed',
+    preparedBy: null,
+    contentHash,
+    recordHash,
+    engineVersion: ENGINE_VERSION,
+    date: outcome.site.asOf,
+    ...sheet,
+  });
+}
+
+function sha256(chunks: Iterable<string | Uint8Array>): string {
+  const hash = createHash('sha256');
+  for (const chunk of chunks) hash.update(chunk);
+  return hash.digest('hex');
+}
