@@ -79,7 +79,6 @@ function KeptPaper({ kept }: { kept: RevisionShown }) {
           <a href={links.proposal} target="_blank" rel="noreferrer">
             Open it beside this page
           </a>
-          <a href={reviewOf(kept)}>Review and approval</a>
         </p>
         <iframe
           className="paper no-print"
@@ -96,11 +95,6 @@ function KeptPaper({ kept }: { kept: RevisionShown }) {
       </section>
     </>
   );
-}
-
-/** The page of a revision's review. */
-function reviewOf({ siteId, revision }: Pick<RevisionHeadShown, 'siteId' | 'revision'>): string {
-  return `/sites/${siteId}/revisions/${revision}/review`;
 }
 
 function Revisions({ revisions }: { revisions: readonly RevisionHeadShown[] }) {
@@ -127,7 +121,7 @@ function Revisions({ revisions }: { revisions: readonly RevisionHeadShown[] }) {
               <VerdictWords verdict={one.verdict} />
             </td>
             <td>
-              <a href={reviewOf(one)}>{STATE_WORDS[one.state ?? 'draft']}</a>
+              <a href={`/sites/${one.siteId}/revisions/${one.revision}/review`}>{STATE_WORDS[one.state ?? 'draft']}</a>
             </td>
             <td>
               <a href={one.links.proposal}>PDF</a>
