@@ -51,10 +51,7 @@ export const COMMANDS: Record<string, Command> = {
   assess: {
     operand: 'SITE',
     values: {
-      load: 'METER-FILE',
-      pdf: 'OUT',
-      before: 'SITE',
-      'before-load': 'METER-FILE',
+      ...{ load: 'METER-FILE', pdf: 'OUT', before: 'SITE', 'before-load': 'METER-FILE' },
       ...SHEET_OPTIONS,
       ...EXPORT_OPTIONS,
       ...METER_OPTIONS,

@@ -27,6 +27,7 @@ import { OpenApiController } from './open-api-controller.js';
 import type { Confirm } from './people/confirm.js';
 import { PageController } from './page/page-controller.js';
 import { PageFiles } from './page/page-files.js';
+import { AccountPageController } from './people/account-page-controller.js';
 import { Accounts, type Reach } from './people/accounts.js';
 import { Admission } from './people/admission.js';
 import { Keys } from './people/keys.js';
@@ -34,6 +35,7 @@ import { KeysController } from './people/keys-controller.js';
 import { type HashCost, PRESENT_COST } from './people/password-hash.js';
 import { People } from './people/people.js';
 import { PeopleController } from './people/people-controller.js';
+import { PeoplePageController } from './people/people-page-controller.js';
 import { SessionController } from './people/session-controller.js';
 import { SignInController } from './people/sign-in-controller.js';
 import { planRunner } from './planning/plan-runner.js';
@@ -89,6 +91,8 @@ const CONTROLLERS: ServerParts['controllers'] = [
   PeopleController,
   KeysController,
   SignInController,
+  AccountPageController,
+  PeoplePageController,
   LinksController,
   LinkedController,
   DemoController,

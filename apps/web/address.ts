@@ -33,8 +33,13 @@ function isStation(word: string): word is Station {
   return (STATIONS as readonly string[]).includes(word);
 }
 
+/** What the site has of its devices is entered beside the table of them. */
+const AT_DEVICES =
+  /^(place|supply\.earthing|control\.currentTransformer|bank\.(?!stages)\w|bank\.stages\[\d+\]\.(switch|fuse|reactor(Max|Linear|Quality)|discharge|measured))/;
+
 /** The station at which a path of the site file is entered. */
 export function stationOfPath(path: string): Station {
+  if (AT_DEVICES.test(path)) return 'network';
   const first = /^\w+/.exec(path)?.[0] ?? '';
   if (['target'].includes(first)) return 'need';
   if (['bank', 'control', 'catalogue'].includes(first)) return 'bank';

@@ -6,6 +6,9 @@ import { shown } from './shown.js';
 /** More problems than this help nobody; the list says how many were left out. */
 const MOST_PROBLEMS = 200;
 
+/** What stands under these keys is never repeated. */
+const SECRET: ReadonlySet<PropertyKey | undefined> = new Set(['password', 'present']);
+
 type Issue = z.core.$ZodIssue;
 
 /**
@@ -71,7 +74,8 @@ function problemsOfIssue(issue: Issue, json: unknown): Problem[] {
   const own = issue.code === 'custom' ? (issue.params as ProblemParams | undefined)?.problem : undefined;
   if (own !== undefined) return [{ ...where, ...own }];
   const value = valueAt(json, issue.path);
-  return [{ ...codeAndExpectation(issue, value), ...where, found: shown(value) }];
+  const found = SECRET.has(issue.path.at(-1)) && value !== undefined ? 'another' : shown(value);
+  return [{ ...codeAndExpectation(issue, value), ...where, found }];
 }
 
 function valueAt(json: unknown, path: readonly PropertyKey[]): unknown {

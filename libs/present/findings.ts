@@ -103,7 +103,7 @@ function remarkFinding(said: Remark): Finding {
     value: typeof value === 'number' ? value : null,
     limit: typeof value === 'number' && typeof limit === 'number' ? limit : null,
     unit: said.unit ?? '',
-    source: said.source ?? '',
+    source: said.source === 'practice' ? 'common practice' : (said.source ?? ''),
     consequence: remarkConsequence(said),
   };
 }

@@ -38,8 +38,8 @@ export interface ProposalFrame {
   /** signatures and acceptances of the paper of an approval */
   review?: PrintedReview;
   paper?: PaperSize;
-  /** where an installed bank was judged again */
-  reevaluation?: Reevaluation;
   /** the site's logo, a PNG or JPEG file */
   logo?: Uint8Array | null;
+  /** where an installed bank was judged again */
+  reevaluation?: Reevaluation;
 }

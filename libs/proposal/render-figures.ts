@@ -40,7 +40,7 @@ export async function renderFigures(outcome: Outcome | EstimateOutcome): Promise
   const open = () =>
     new PDFDocument({ size: sheet('A4'), margin: 0, tagged: true, font: null as unknown as string, bufferPages: true });
   const site = plainName(outcome.site.name);
-  const charts = chartsOf(outcome).map(([name, chart]) => ({ name, svg: chartSvg(open(), chart, site) }));
+  const charts = chartsOf(outcome).map(([name, chart]) => ({ name, svg: chartSvg(open(), { name, chart }, site) }));
   return [{ name: 'single-line', svg: diagramSvg(open(), outcome, site) }, ...charts];
 }
 
@@ -61,15 +61,15 @@ function chartsOf(outcome: Outcome | EstimateOutcome): [string, Chart][] {
 
 function diagramSvg(doc: PDFKit.PDFDocument, outcome: Outcome | EstimateOutcome, site: string): string {
   const diagram = singleLine(outcome);
-  const pen = new SvgPen();
+  const pen = new SvgPen('single-line');
   const { height, draw } = setSingleLine(new Paper(penned(doc, pen)), diagram, WIDTH - 2 * MARGIN);
   draw(MARGIN, MARGIN);
   const size = { width: WIDTH, height: height + 2 * MARGIN };
   return svgFile(pen, size, { title: `Single-line diagram, ${site}`, sentence: diagram.sentence });
 }
 
-function chartSvg(doc: PDFKit.PDFDocument, chart: Chart, site: string): string {
-  const pen = new SvgPen();
+function chartSvg(doc: PDFKit.PDFDocument, { name, chart }: { name: string; chart: Chart }, site: string): string {
+  const pen = new SvgPen(name);
   const paper = new Paper(penned(doc, pen));
   const isMap = chart.marks.some(({ kind }) => kind === 'cell');
   const rows = chart.table.rows.length;

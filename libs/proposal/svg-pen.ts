@@ -29,6 +29,9 @@ export class SvgPen {
   #clips = 0;
   #groups = 0;
 
+  /** @param name of the figure, so that several on one page keep their own clips */
+  constructor(private readonly name: string) {}
+
   /** @returns what was drawn, as the inside of an svg element */
   get drawn(): string {
     return this.#parts.join('\n');
@@ -93,7 +96,7 @@ export class SvgPen {
 
   /** What follows is cut to the present path, until the state before is restored. */
   clip(): void {
-    const id = `clip${++this.#clips}`;
+    const id = `${this.name}-clip-${++this.#clips}`;
     this.#parts.push(`<clipPath id="${id}"><path d="${this.#path}"/></clipPath>`, `<g clip-path="url(#${id})">`);
     this.#path = '';
     this.#groups++;

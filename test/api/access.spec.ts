@@ -18,7 +18,14 @@ const reason = { reason: 'a reason' };
 const check = { passed: true };
 const csv = { body: 'x', type: 'text/csv' };
 
+const FORM = 'application/x-www-form-urlencoded';
+
 const BODIES: Asking['bodies'] = {
+  'POST /people': { body: 'name=x', type: FORM },
+  'POST /people/:personId': { body: 'act=change&version=999&name=x', type: FORM },
+  'POST /account/password': { body: 'present=x', type: FORM },
+  'POST /account/keys': { body: 'name=', type: FORM },
+  'POST /account/keys/:keyId/revoke': { body: '', type: FORM },
   [`PUT ${SITE}`]: { body: siteFile() },
   [`POST ${SITE}/records`]: csv,
   [`POST ${SITE}/records/:recordId/revisions`]: csv,

@@ -1,9 +1,11 @@
 // Round trip over HTTP: what is exported and imported again has the same hash. Tables are read back by csv-parse.
+import { deflateSync } from 'node:zlib';
 import { parse } from 'csv-parse/sync';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { canonicalJson } from '#libs/contract/canonical-json.js';
 import { readWorkbookRows } from '#libs/meter-files/xlsx/read-workbook-rows.js';
 import { databases, type TestDatabase } from '../support/databases.js';
+import { pngFile } from '../support/made-picture.js';
 import { startServer, type TestServer } from '../support/test-server.js';
 import { meterFile, siteFile } from './site-builder.js';
 
@@ -92,6 +94,22 @@ describe('exports over HTTP', () => {
     expect(text).not.toMatch(/(^|,)"?=/m);
   });
 
+  it('print the proposal on the sheet and with the logo that were asked for, and refuse a bomb', async () => {
+    const size = { width: 4, height: 2, bits: 8, colour: 2, samples: Array.from({ length: 24 }, (_, n) => n) };
+    const logo = pngFile(size).toString('base64');
+    const asked = { paper: 'Letter', logo, reason: 'on letter paper' };
+    const { id: other } = (await server.ask('POST', '/api/sites', siteFile({ name: 'Letter works' }))).body;
+    await server.upload(other, meterFile(9));
+    const ask = (body: object) => server.ask('POST', `/api/sites/${other}/assessments?wait=60`, body);
+    const bomb = pngFile({ ...size, data: deflateSync(Buffer.alloc(20_000_000)) }).toString('base64');
+    expect((await ask({ ...asked, logo: bomb })).body).toMatchObject({ code: 'too-large', path: 'logo' });
+    expect((await ask(asked)).status).toBe(201);
+    const { body } = await server.ask('GET', `/api/sites/${other}/revisions/1/proposal.pdf`);
+    const text = (body as Buffer).toString('latin1');
+    expect(text).toContain('/MediaBox [0 0 612 792]');
+    expect(text).toContain('/Subtype /Image');
+  });
+
   it.each([
     '/exports/site.pdf',
     '/exports/plan.json',
@@ -104,9 +122,10 @@ describe('exports over HTTP', () => {
 
   it('refuse a site file that is none, naming the row', async () => {
     const answer = await imported('/api/site-imports', Buffer.from('path,kind,value\nname,number,x\n'), 'text/csv');
-    expect(answer.status).toBe(422);
-    expect(await answer.json()).toMatchObject({ code: 'unreadable', row: 2 });
-    expect((await imported('/api/site-imports', Buffer.from('time,kW\n'), 'text/csv')).status).toBe(422);
+    expect(answer.status).toBe(400);
+    expect(await answer.json()).toMatchObject({ code: 'unreadable', row: 2, column: 3 });
+    const other = await imported('/api/site-imports', Buffer.from('time,kW\n'), 'text/csv');
+    expect(await other.json()).toMatchObject({ code: 'unknown-format' });
   });
 });
 

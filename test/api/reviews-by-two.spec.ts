@@ -35,7 +35,7 @@ describe('a revision that one prepares and another approves', () => {
     const made = await server.ask('POST', `/api/sites/${id}/plans?wait=60`, asked, headers);
     expect(made.status).toBe(201);
     path = `/api/sites/${id}/revisions/${made.body.revision}`;
-  });
+  }, 240_000);
 
   afterAll(async () => {
     await server.close();

@@ -56,7 +56,7 @@ for (const { name, available, create } of databases) {
       siteId = (await server.ask('POST', '/api/sites', site('Alder Works'))).body.id;
       expect((await server.upload(siteId, meterFile(14))).status).toBe(201);
       expect((await plan()).status).toBe(201);
-    });
+    }, 240_000);
 
     afterAll(async () => {
       await server.close();

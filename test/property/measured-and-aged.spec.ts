@@ -143,6 +143,33 @@ describe('ageing', () => {
     expect(comesOutUf! / plain.charge.stages[1]!.capacitanceUf).toBeCloseTo(comesOutPct! / 100, 12);
   });
 
+  // Second method: the same bank written out and assessed whole. At order 4.6 next to nothing flows, so that only a peak of
+  // |Z| near it can speak against a stage whose tuned order has moved up towards it.
+  it('of one stage alone is judged whole: a peak that comes near an order present is seen', () => {
+    const [first, second] = BANK.stages as [BankInput['stages'][0], BankInput['stages'][0]];
+    const orders = [
+      { orderH: 4.6, pct: 0.01 },
+      { orderH: 11, pct: 4 },
+    ];
+    const loads = { distorting: [{ name: 'drives', fundamentalA: 100, orders }], backgroundPct: [] };
+    for (const [pct, verdict] of [
+      [90, 'clear'],
+      [70, 'watch'],
+    ] as const) {
+      const measuredUf = (plain.charge.stages[1]!.capacitanceUf * pct) / 100;
+      const bank = { stages: [first, { ...second, measuredUf }], interStageUh: 2 };
+      const left = { ...second, count: 1, ratedKvar: (second.ratedKvar * pct) / 100, reactorPct: (7 * pct) / 100 };
+      const written = assessedSite({
+        loads,
+        bank: { stages: [first, { ...second, count: 2 }, left], interStageUh: 2 },
+      });
+      expect(written.verdict).toBe(verdict);
+      expect(reasonCodes(written).includes('peak.near')).toBe(verdict === 'watch');
+      expect(written.duties.every((duty) => duty.verdict === 'clear' || duty.verdict === null)).toBe(true);
+      expect(assessedSite({ loads, bank }).ageing.cases[2]!.verdict, `${pct} %`).toBe(verdict);
+    }
+  });
+
   it('tells of a stage that was measured below that', () => {
     const [first, second] = BANK.stages as [BankInput['stages'][0], BankInput['stages'][0]];
     const atPct = (pct: number) => {

@@ -166,6 +166,7 @@ function otherSites(others: SiteView['others']): Html {
 function footer(): Html {
   return html`<section aria-labelledby="more"><h2 id="more">Also here</h2><ul class="links">
 <li><a href="/verify">Verify a paper</a></li>
+<li><a href="/account">Account and people</a></li>
 <li><a href="/api/openapi.json">The API’s description (OpenAPI)</a></li>
 <li><a href="/api/sites">Sites as JSON</a></li>
 <li><a href="/api/demo/site.json">Example site file</a></li>

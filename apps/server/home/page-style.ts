@@ -50,6 +50,9 @@ button { font: inherit; font-weight: 600; color: var(--sheet); background: var(-
   padding: 6px 20px; cursor: pointer; }
 button.quiet { color: inherit; background: none; border: 1px solid var(--soft); font-weight: 400; min-height: 32px; padding: 2px 12px; }
 input:focus-visible, select:focus-visible, button:focus-visible { outline: 3px solid var(--ink); outline-offset: 3px; }
+.people { max-width: 720px; }
+.people td { text-align: left; }
+.people form { margin: 0; }
 .alert { border-left: 5px solid var(--avoid); padding: 4px 12px; max-width: 620px; }
 .links { list-style: none; padding: 0; display: flex; flex-wrap: wrap; gap: 4px 24px; }
 .links a { padding: 9px 0; }

@@ -30,3 +30,19 @@ ${body}
 export function alertLine(text: string | null): Html | null {
   return text === null ? null : html`<p role="alert" class="alert">${text}</p>`;
 }
+
+/** A line of text in a form. */
+export function textField(
+  name: string,
+  label: string,
+  { required, longest, value = '' }: { required: boolean; longest: number; value?: string },
+): Html {
+  return html`<p class="field"><label for="${name}">${label}</label>
+<input id="${name}" name="${name}" value="${value}" maxlength="${longest}" autocomplete="off"${required ? html` required` : null}></p>`;
+}
+
+/** A password in a form. */
+export function passwordField(name: string, label: string, autocomplete: string): Html {
+  return html`<p class="field"><label for="${name}">${label}</label>
+<input id="${name}" name="${name}" type="password" required maxlength="200" autocomplete="${autocomplete}"></p>`;
+}

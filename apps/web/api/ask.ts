@@ -44,6 +44,8 @@ export async function ask<T>(path: string, asking: Asking = {}): Promise<Answer<
   } catch {
     throw new NoConnection('no connection');
   }
+  // The session has ended: whoever sits here signs in again; what was typed stands in the draft.
+  if (response.status === 401) location.assign('/sign-in');
   const text = await response.text();
   const isJson = /json/.test(response.headers.get('content-type') ?? '');
   if (!response.ok) throw new Refused(isJson ? (JSON.parse(text) as ProblemJson) : plainProblem(response));

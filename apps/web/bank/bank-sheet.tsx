@@ -9,6 +9,7 @@ import { Plot } from '../draw/plot.js';
 import { latestResult } from '../line/latest-result.js';
 import { NoRecord } from '../record/no-record.js';
 import { Headline } from '../working/headline.js';
+import { CatalogueFields } from './catalogue-fields.js';
 import { ControlFields } from './control-fields.js';
 import { RatioTable } from './ratio-table.js';
 import { ReplayFigure } from './replay-figure.js';
@@ -66,6 +67,7 @@ export function BankSheet() {
       </div>
       <StageFields />
       <ControlFields />
+      <CatalogueFields />
       {charts.bank === undefined ? (
         <BeingDrawn />
       ) : (
@@ -130,6 +132,7 @@ function NoBank({ result }: { result: Result | null }) {
         </button>
         <span className="soft">Designed from the record and the supply, or stage by stage by hand.</span>
       </p>
+      <CatalogueFields />
     </>
   );
 }

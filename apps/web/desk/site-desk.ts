@@ -11,9 +11,13 @@ import { EngineDesk } from './engine-desk.js';
 import { followJob, type JobEnd, keptJob } from './follow-job.js';
 import type { Firmness, Look, LookAsked, Picks, Trace } from './look.js';
 import { mergedLook } from './merged-look.js';
+import { RetryLater } from './retry-later.js';
 
 /** Wait for a first plan that is being made elsewhere [ms]. */
 const FIRST_PLAN_MS = 1500;
+
+/** Wait before a lost connection is tried again [ms]. */
+const MEND_MS = 4000;
 
 /** Everything one site's page does: holds what is typed, asks the engine and the server, and says what came of it. */
 export class SiteDesk {
@@ -25,6 +29,8 @@ export class SiteDesk {
   #full: Look | null = null;
   #stopJob: (() => void) | null = null;
   #closed = false;
+  /** asks whether the server is back; what is typed meanwhile stays as it is */
+  readonly #mending = new RetryLater(MEND_MS, () => this.#refreshThen(() => this.#prepareEngine()));
   readonly #listeners = new Set<() => void>();
 
   constructor(siteId: string) {
@@ -53,7 +59,8 @@ export class SiteDesk {
       await this.#refresh();
       this.#set({ stage: 'open' });
       this.#prepareEngine();
-      this.#resumeJob();
+      const jobId = keptJob(this.siteId);
+      if (jobId !== null) this.#follow(jobId);
     } catch (error) {
       this.#hear(error);
       if (this.#state.stage === 'opening') this.#set({ stage: error instanceof Refused ? 'unknown' : 'unreachable' });
@@ -64,6 +71,7 @@ export class SiteDesk {
     this.#closed = true;
     this.#engine?.close();
     this.#stopJob?.();
+    this.#mending.stop();
   }
 
   openStation(station: Station): void {
@@ -176,9 +184,7 @@ export class SiteDesk {
 
   #lookAgain(): void {
     if (this.#closed || this.#state.job !== null || this.#state.kept !== null) return;
-    this.#refresh()
-      .then(() => this.#state.kept !== null && this.#look(true))
-      .catch((error) => this.#hear(error));
+    this.#refreshThen(() => this.#state.kept !== null && this.#look(true));
   }
 
   async #kept(): Promise<void> {
@@ -195,9 +201,8 @@ export class SiteDesk {
     });
   }
 
-  #resumeJob(): void {
-    const jobId = keptJob(this.siteId);
-    if (jobId !== null) this.#follow(jobId);
+  #refreshThen(work: () => void): void {
+    this.#refresh().then(work, (error) => this.#hear(error));
   }
 
   async #ended(end: JobEnd): Promise<void> {
@@ -278,6 +283,7 @@ export class SiteDesk {
   #hear(error: unknown): void {
     if (error instanceof NoConnection) {
       this.#set({ offlineSince: this.#state.offlineSince ?? clockNow() });
+      if (this.#state.stage === 'open') this.#mending.begin();
       return;
     }
     if (!(error instanceof Refused)) throw error;

@@ -25,6 +25,11 @@ export function Head({ site, state, children }: { site?: ReactNode; state?: Reac
             All sites
           </a>
         )}
+        {site === undefined ? (
+          <a className="way" href="/account">
+            Account
+          </a>
+        ) : null}
         <button type="button" className="way" onClick={() => chooseTheme(other)}>
           {other === 'dark' ? 'Dark' : 'Light'}
         </button>

@@ -1,3 +1,4 @@
+import { siteAddress, stationOfPath } from '../address.js';
 import { useDesk } from '../desk/use-desk.js';
 import { DifferingFields } from './differing-fields.js';
 
@@ -29,8 +30,14 @@ export function Notices() {
       ))}
       {problems.length === general.length ? null : (
         <p className="notice" role="alert">
-          Refused at {[...new Set(problems.map(({ path }) => path ?? ''))].filter(Boolean).join(', ')}. The figures
-          below are those from before.
+          Refused at{' '}
+          {[...new Set(problems.flatMap(({ path }) => path ?? []))].map((path, at) => (
+            <span key={path}>
+              {at === 0 ? '' : ', '}
+              <a href={siteAddress(desk.siteId, stationOfPath(path), { field: path })}>{path}</a>
+            </span>
+          ))}
+          . The figures below are those from before.
         </p>
       )}
       {Object.keys(typed).length === 0 ? null : (

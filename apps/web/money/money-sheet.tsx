@@ -16,6 +16,7 @@ import { Plot } from '../draw/plot.js';
 import { ScrollTable } from '../draw/scroll-table.js';
 import { latestResult } from '../line/latest-result.js';
 import { Headline } from '../working/headline.js';
+import { BilledFields } from './billed-fields.js';
 import { MonthBill } from './month-bill.js';
 import { PicksTable } from './picks-table.js';
 import { PriceFields } from './price-fields.js';
@@ -32,6 +33,7 @@ export function MoneySheet() {
     <>
       {money === null ? <NotPriced papers={papers} /> : <Figures money={money} papers={papers} />}
       <TariffFields currency={currency} />
+      <BilledFields currency={currency} />
       <PriceFields currency={currency} />
     </>
   );

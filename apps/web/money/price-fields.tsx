@@ -77,26 +77,67 @@ function Invented() {
   );
 }
 
+function useEntries<T>(path: string) {
+  const { desk, state } = useDesk();
+  const list = (valueAt(state.document, path) as T[] | undefined) ?? [];
+  const put = (next: T[]) => desk.type(path, '', { value: next.length === 0 ? undefined : next });
+  return { list, put };
+}
+
 function Switches() {
-  const { state } = useDesk();
-  const switches = (valueAt(state.document, 'prices.switches') as PriceBook['switches']) ?? [];
-  return switches.map(({ kind }, at) => (
-    <fieldset key={at} className="sentence" aria-label={`Switch ${kind}`}>
-      <TextField path={`prices.switches[${at}].kind`} label="switch" />
-      <QuantityField path={`prices.switches[${at}].perStage`} label="each stage" />
-      <QuantityField path={`prices.switches[${at}].perKvar`} label="per kvar" />
-      <QuantityField path={`prices.switches[${at}].lifeSwitchings`} label="lasts, switchings" otherwise="for ever" />
-    </fieldset>
-  ));
+  const path = 'prices.switches';
+  const { list, put } = useEntries<NonNullable<PriceBook['switches']>[number]>(path);
+  return (
+    <>
+      {list.map(({ kind }, at) => (
+        <fieldset key={at} className="sentence" aria-label={`Switch ${kind}`}>
+          <TextField path={`${path}[${at}].kind`} label="switch" />
+          <QuantityField path={`${path}[${at}].perStage`} label="each stage" />
+          <QuantityField path={`${path}[${at}].perKvar`} label="per kvar" />
+          <QuantityField path={`${path}[${at}].lifeSwitchings`} label="lasts, switchings" otherwise="for ever" />
+          <button type="button" className="way" onClick={() => put(list.toSpliced(at, 1))}>
+            Remove<span className="hidden"> {kind}</span>
+          </button>
+        </fieldset>
+      ))}
+      <p className="row">
+        <button
+          type="button"
+          className="way"
+          id={`field:${path}`}
+          onClick={() => put([...list, { kind: `switch ${list.length + 1}` }])}
+        >
+          Add a kind of switch
+        </button>
+      </p>
+    </>
+  );
 }
 
 function Cabinets() {
-  const { state } = useDesk();
-  const cabinets = (valueAt(state.document, 'prices.cabinets') as PriceBook['cabinets']) ?? [];
-  return cabinets.map(({ name }, at) => (
-    <fieldset key={at} className="sentence" aria-label={`Cabinet ${name}`}>
-      <TextField path={`prices.cabinets[${at}].name`} label="cabinet" />
-      <QuantityField path={`prices.cabinets[${at}].price`} label="price" />
-    </fieldset>
-  ));
+  const path = 'prices.cabinets';
+  const { list, put } = useEntries<NonNullable<PriceBook['cabinets']>[number]>(path);
+  return (
+    <>
+      {list.map(({ name }, at) => (
+        <fieldset key={at} className="sentence" aria-label={`Cabinet ${name}`}>
+          <TextField path={`${path}[${at}].name`} label="cabinet" />
+          <QuantityField path={`${path}[${at}].price`} label="price" />
+          <button type="button" className="way" onClick={() => put(list.toSpliced(at, 1))}>
+            Remove<span className="hidden"> {name}</span>
+          </button>
+        </fieldset>
+      ))}
+      <p className="row">
+        <button
+          type="button"
+          className="way"
+          id={`field:${path}`}
+          onClick={() => put([...list, { name: `cabinet ${list.length + 1}`, price: 0 }])}
+        >
+          Add a cabinet
+        </button>
+      </p>
+    </>
+  );
 }

@@ -1,10 +1,13 @@
 import type { Clause, TariffWindow } from '#libs/engine/index.js';
 import { useDesk } from '../desk/use-desk.js';
+import { ChoiceField } from '../field/choice-field.js';
 import { valueAt } from '../field/document-path.js';
 import { FieldFrame, refusalOf } from '../field/field-frame.js';
 import { QuantityField } from '../field/quantity-field.js';
 import { TextField } from '../field/text-field.js';
 import { ClauseSentence } from './clause-sentence.js';
+import { ClauseTerms } from './clause-terms.js';
+import { DayListField } from './day-list-field.js';
 import { TariffWindows } from './tariff-windows.js';
 
 const KINDS: Record<Clause['kind'], string> = {
@@ -75,7 +78,12 @@ export function TariffFields({ currency }: { currency: string }) {
         <QuantityField path="tariff.decimals" label="lines rounded to" otherwise="2 decimals" />
         <QuantityField path="tariff.demandS" label="demand blocks of" unit="s" otherwise="the record’s" />
       </div>
+      <FactorSentence />
       <TariffWindows />
+      <div className="sentence">
+        <span>Holidays, on which day 8 holds instead of the weekday:</span>
+        <DayListField path="tariff.holidays" label="days, as 2025-12-25" />
+      </div>
       {clauses.map((clause, at) => (
         <fieldset key={at} className="clause" aria-label={`Clause ${clause.name}`}>
           <div className="fields">
@@ -101,9 +109,41 @@ export function TariffFields({ currency }: { currency: string }) {
           </div>
           <ClauseSentence path={`${path}[${at}]`} currency={currency} />
           <ClauseWindows path={`${path}[${at}]`} clause={clause} />
+          <ClauseTerms path={`${path}[${at}]`} clause={clause} />
         </fieldset>
       ))}
     </section>
+  );
+}
+
+/** From which energies and with which rounding the tariff takes its power factor. */
+function FactorSentence() {
+  return (
+    <div className="sentence">
+      <span>The power factor is that of</span>
+      <ChoiceField
+        path="tariff.factor.basis"
+        label="formed from"
+        otherwise="the energies"
+        choices={[
+          ['atMaxKw', 'the block of greatest kW'],
+          ['maxima', 'greatest kW over kVA'],
+        ]}
+      />
+      <span>with</span>
+      <ChoiceField
+        path="tariff.factor.reactive"
+        label="which kvarh"
+        otherwise="lagging"
+        choices={[
+          ['leading', 'leading'],
+          ['both', 'both, added'],
+          ['net', 'lagging less leading'],
+        ]}
+      />
+      <span>rounded to</span>
+      <QuantityField path="tariff.factor.decimals" label="decimals" otherwise="not rounded" />
+    </div>
   );
 }
 

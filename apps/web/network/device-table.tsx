@@ -33,7 +33,7 @@ export function DeviceTable({ result }: { result: Result }) {
             {fitted}
           </span>,
           state === 'falls short' ? <b key={device}>{state}</b> : state,
-          <span key={device} className="soft">
+          <span key={device} className="soft nowrap">
             {basis}
           </span>,
         ])}

@@ -43,6 +43,7 @@ function GroupFields({ at, isOnly }: { at: number; isOnly: boolean }) {
         <BankQuantityField path={`${path}.reactorLinearA`} label="reactor, linear up to" unit="A" />
         <BankQuantityField path={`${path}.dischargeOhm`} label="discharge resistor" unit="Ω" />
         <BankQuantityField path={`${path}.measuredUf`} label="measured, one phase" unit="µF" />
+        <BankQuantityField path={`${path}.reactorQuality`} label="X/R of the reactor" otherwise="30, customary" />
       </div>
     </fieldset>
   );
@@ -61,6 +62,7 @@ function BankFields() {
         <BankQuantityField path={`${device}.breakingKa`} label="breaking capacity" unit="kA" />
         <BankQuantityField path={`${device}.withstandKa`} label="busbars, peak" unit="kA" />
         <BankQuantityField path="bank.conductorA" label="conductors carry" unit="A" />
+        <BankQuantityField path="bank.interStageUh" label="between stages" unit="µH" otherwise="2, customary" />
         <BankChoiceField path={`${protection}.earthFault`} label="earth fault" choices={FITTED} />
         <BankChoiceField path={`${protection}.overTemperature`} label="over-temperature" choices={FITTED} />
         <BankChoiceField path={`${protection}.overPressure`} label="over-pressure" choices={FITTED} />

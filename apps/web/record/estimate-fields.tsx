@@ -1,6 +1,7 @@
 import { useDesk } from '../desk/use-desk.js';
 import { valueAt } from '../field/document-path.js';
 import { ListEntry } from '../field/list-entry.js';
+import { monthAfter } from '../field/month-after.js';
 import { QuantityField } from '../field/quantity-field.js';
 import { TextField } from '../field/text-field.js';
 
@@ -93,12 +94,4 @@ function Equipment() {
       ))}
     </section>
   );
-}
-
-/** The month after one that is typed already, so that a year of bills is quickly entered. */
-function monthAfter(month: unknown): string | undefined {
-  const parts = typeof month === 'string' ? /^(\d{4})-(0[1-9]|1[0-2])$/.exec(month) : null;
-  if (parts === null) return undefined;
-  const next = 12 * Number(parts[1]) + Number(parts[2]);
-  return `${Math.floor(next / 12)}-${String((next % 12) + 1).padStart(2, '0')}`;
 }

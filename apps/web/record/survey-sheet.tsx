@@ -1,70 +1,86 @@
 import { useEffect, useState } from 'react';
+import { formatQuantity } from '#libs/present/format-number.js';
+import { type KnownOfSite, visitQuestions } from '#libs/present/visit-questions.js';
 import { ask } from '../api/ask.js';
-import type { SiteShown } from '../api/shown.js';
+import type { SiteDocument, SiteShown } from '../api/shown.js';
+import { valueAt } from '../field/document-path.js';
 import { Head } from '../line/head.js';
+import { surveyParts } from './survey-parts.js';
 
-const ROWS: [string, string[]][] = [
-  ['Transformer', ['plate: kVA, impedance %, load loss', 'taps and the one in use', 'photograph of the plate']],
-  [
-    'Main board',
-    ['nominal and highest voltage', 'free breaker way: rating, place', 'photograph, doors open, at a safe distance'],
-  ],
-  ['Current transformer', ['ratio and class', 'place: before or behind the bank’s branch', 'direction']],
-  ['Old bank', ['in or out, since when', 'plates of stages and reactors', 'what the controller shows']],
-  ['Loads', ['drives and rectifiers: current, kind, choke', 'motors above 30 kW', 'welders, furnaces, large lighting']],
-  ['Room', ['free width, depth, height', 'temperature and dust', 'cable route and length to the board']],
-  [
-    'Meter',
-    [
-      'where it stands: bus or primary',
-      'how interval data can be had, for which months',
-      'tariff’s clause on reactive energy',
-    ],
-  ],
-];
-
-/** One page for the visit, with room to write. */
+/** One page for the visit: what to ask, what to look for with what is entered already, and room to write. */
 export function SurveySheet({ siteId }: { siteId: string }) {
-  const [name, setName] = useState('');
+  const [site, setSite] = useState<SiteDocument | null>(null);
+  const [isMissing, setMissing] = useState(false);
   useEffect(() => {
-    void ask<SiteShown>(`/api/sites/${siteId}`).then(({ body }) => setName(body.name));
+    ask<SiteShown>(`/api/sites/${siteId}`).then(
+      ({ body }) => setSite(body.site),
+      () => setMissing(true),
+    );
   }, [siteId]);
+  const name = site?.name ?? '';
   return (
     <div className="sheet">
       <Head site={<a href={`#/sites/${siteId}/record`}>{name}</a>} />
       <div className="sites-line" />
-      <main className="sites">
-        <h1>Site survey: {name}</h1>
-        <p className="caption">
-          Three questions decide most: how strong is the supply, what distorts, and was a bank working while the record
-          was taken?
-        </p>
-        <table>
-          <thead>
-            <tr>
-              <th scope="col">what</th>
-              <th scope="col">look for</th>
-              <th scope="col">found</th>
-            </tr>
-          </thead>
-          <tbody>
-            {ROWS.flatMap(([what, looks]) =>
-              looks.map((look, at) => (
-                <tr key={look} style={{ height: 34 }}>
-                  {at === 0 ? (
-                    <th scope="rowgroup" rowSpan={looks.length}>
-                      {what}
-                    </th>
-                  ) : null}
-                  <td>{look}</td>
-                  <td style={{ width: '45%' }} />
-                </tr>
-              )),
-            )}
-          </tbody>
-        </table>
-        <p className="row gap caption">Surveyed by ______________________ on ______________</p>
+      <main className="sites survey">
+        {isMissing ? <h1>No site stands at this address, or the server does not answer.</h1> : null}
+        {site === null ? null : (
+          <>
+            <h1>Site survey: {name}</h1>
+            <ol className="survey-asked">
+              {visitQuestions(site as KnownOfSite).map(({ path, question, why }) => (
+                <li key={path}>
+                  <b>{question}</b> <span className="caption">{why}</span>
+                </li>
+              ))}
+            </ol>
+            <SurveyTable site={site} />
+            <p className="row gap caption">
+              Look, do not open: covers and doors are the electrician’s. Surveyed by ______________________ on
+              ______________
+            </p>
+          </>
+        )}
       </main>
     </div>
   );
+}
+
+function SurveyTable({ site }: { site: SiteDocument }) {
+  return (
+    <table>
+      <thead>
+        <tr>
+          <th scope="col">what</th>
+          <th scope="col">look for</th>
+          <th scope="col">entered</th>
+          <th scope="col">found</th>
+        </tr>
+      </thead>
+      <tbody>
+        {surveyParts.flatMap(({ what, looks }) =>
+          looks.map(({ look, path, unit, isPhotograph }, at) => (
+            <tr key={look}>
+              {at === 0 ? (
+                <th scope="rowgroup" rowSpan={looks.length}>
+                  {what}
+                </th>
+              ) : null}
+              <td>
+                {isPhotograph ? <span className="box" aria-hidden="true" /> : null}
+                {look}
+              </td>
+              <td className="soft">{path === undefined ? '' : entered(valueAt(site, path), unit ?? '')}</td>
+              <td />
+            </tr>
+          )),
+        )}
+      </tbody>
+    </table>
+  );
+}
+
+function entered(value: unknown, unit: string): string {
+  if (typeof value === 'number') return formatQuantity(value, unit, 'given');
+  return typeof value === 'string' ? value : '';
 }

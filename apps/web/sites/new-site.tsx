@@ -14,11 +14,12 @@ export function NewSite() {
   );
   const [problems, setProblems] = useState<readonly Problem[]>([]);
   const [failure, setFailure] = useState('');
-  const create = async (document: unknown) => {
+  const create = async (document: unknown, added?: (siteId: string) => Promise<unknown>) => {
     setProblems([]);
     setFailure('');
     try {
       const { body } = await ask<SiteShown>('/api/sites', { method: 'POST', json: document });
+      await added?.(body.id);
       window.location.hash = siteAddress(body.id, 'record');
     } catch (error) {
       if (error instanceof Refused) {
@@ -31,8 +32,12 @@ export function NewSite() {
     }
   };
   const example = async () => {
-    const { body } = await ask<Record<string, unknown>>('/api/demo/site.json');
-    await create(body);
+    try {
+      const { body } = await ask<Record<string, unknown>>('/api/demo/site.json');
+      await create(body, sendExampleRecord);
+    } catch {
+      setFailure('Not added: no connection.');
+    }
   };
   const importFile = async (file: File | undefined) => {
     if (file === undefined) return;
@@ -87,6 +92,13 @@ export function NewSite() {
       )}
     </section>
   );
+}
+
+/** The example's own meter file, from this server and back to it. */
+async function sendExampleRecord(siteId: string): Promise<void> {
+  const file = await (await fetch('/api/demo/load.csv')).blob();
+  const headers = { 'content-type': 'application/octet-stream' };
+  await ask(`/api/sites/${siteId}/records?name=load.csv`, { method: 'POST', body: file, headers });
 }
 
 function BlankInput({

@@ -94,16 +94,22 @@ function useSites() {
 }
 
 function SiteRow({ site, onChange, onRemove }: { site: SiteListed; onChange: () => void; onRemove: () => void }) {
-  const duplicate = async () => {
+  const [failure, setFailure] = useState('');
+  /** Does it, and says where it could not be done. */
+  const said = (work: () => Promise<void>) => () => {
+    setFailure('');
+    work().catch((error) => setFailure(error instanceof NoConnection ? 'Not done: no connection.' : String(error)));
+  };
+  const duplicate = said(async () => {
     const { site: document } = (await ask<SiteShown>(`/api/sites/${site.id}`)).body;
     const name = document.name.replace(/ \(example\)$/, '');
     await ask('/api/sites', { method: 'POST', json: { ...document, name: `${name}, copy` } });
     onChange();
-  };
-  const exportFile = async () => {
+  });
+  const exportFile = said(async () => {
     const { site: document } = (await ask<SiteShown>(`/api/sites/${site.id}`)).body;
     saveText(`${plainFileName(site.name)}.json`, 'application/json', `${JSON.stringify(document, null, 2)}\n`);
-  };
+  });
   return (
     <li className="site-row">
       <div>
@@ -119,15 +125,16 @@ function SiteRow({ site, onChange, onRemove }: { site: SiteListed; onChange: () 
         </p>
       </div>
       <p className="row">
-        <button type="button" className="way" onClick={() => void duplicate()}>
+        <button type="button" className="way" onClick={duplicate}>
           Duplicate<span className="hidden"> {site.name}</span>
         </button>
-        <button type="button" className="way" onClick={() => void exportFile()}>
+        <button type="button" className="way" onClick={exportFile}>
           Export<span className="hidden"> {site.name}</span>
         </button>
         <button type="button" className="way" onClick={onRemove}>
           Delete<span className="hidden"> {site.name}</span>
         </button>
+        {failure === '' ? null : <span role="alert">{failure}</span>}
       </p>
     </li>
   );

@@ -8,7 +8,11 @@ import { latestResult } from '../line/latest-result.js';
 import { Headline } from '../working/headline.js';
 import { DiagramFigure } from './diagram-figure.js';
 import { LoadFields } from './load-fields.js';
+import { MeasuredFields } from './measured-fields.js';
 import { TransformerFields } from './transformer-fields.js';
+
+const IEC_EDITIONS = ['IEC 61000-2-4:2002', 'EN 50160:2010'] as const;
+const IEEE_EDITIONS = ['IEEE 519-2022', 'IEEE 519-2014'] as const;
 
 /** The supply and its loads: a single-line diagram drawn from the data, edited by the fields beside it. */
 export function SupplySheet() {
@@ -78,6 +82,7 @@ export function SupplySheet() {
       </div>
       <TransformerFields count={transformers.length} />
       <LoadFields />
+      <MeasuredFields />
       <section className="section" aria-labelledby="rules">
         <h2 id="rules">Judged by</h2>
         <div className="fields">
@@ -99,6 +104,14 @@ export function SupplySheet() {
               [2, 'class 2'],
               [3, 'class 3'],
             ]}
+          />
+          <ChoiceField
+            path="limits.edition"
+            label="limits by"
+            otherwise="the rules’ own"
+            choices={(valueAt(state.document, 'rules') === 'ieee' ? IEEE_EDITIONS : IEC_EDITIONS).map(
+              (edition) => [edition, edition] as const,
+            )}
           />
         </div>
       </section>

@@ -4,7 +4,7 @@ import { deltaCapacitanceUf, tunedOrderH } from '../layout/stage.js';
 import type { NetworkModel } from '../network/network-model.js';
 import { InputProblem } from '../problem.js';
 import { type JudgeBasis, judgeBank } from './judge-bank.js';
-import { quickJudge } from './quick-judge.js';
+import { firmVerdict, quickJudge } from './quick-judge.js';
 import { graver, type Verdict } from './rules.js';
 import { agedGroup, lastFactors, type StageHistory, stageHistories } from './stage-history.js';
 
@@ -85,11 +85,13 @@ export function ageing(
       verdict: judgeBank(model, all.bank, levels, basis).verdict,
     },
   ];
-  const verdictOf = (one: Bank): Verdict | null => flowsVerdict(model, one, basis);
   for (const [g, { factor, from: how }] of left.entries()) {
     const alone = aged(bank, g, factor);
-    cases.push({ ...described(alone, g, { frequencyHz, factor, from: how }), verdict: verdictOf(alone) });
+    const verdict = ofStages(() => firmVerdict(model, alone, basis).verdict);
+    cases.push({ ...described(alone, g, { frequencyHz, factor, from: how }), verdict });
   }
+  // The search for a stage's end asks too often to look for peaks of |Z| as well.
+  const verdictOf = (one: Bank): Verdict | null => ofStages(() => quickJudge(model, one, basis).verdict);
   return { cases, stages: bank.groups.map((_, g) => stageEnd(bank, g, { frequencyHz, verdictOf })), measured };
 }
 
@@ -159,10 +161,10 @@ export function aged(bank: Bank, group: number | null, factor: number): Bank {
   return { ...bank, groups: [...rest, { ...agedGroup(bank.groups[group]!, factor), count: 1 }] };
 }
 
-// Flows of every level and corner; a peak near an order present is looked for in the case of all stages alone.
-function flowsVerdict(model: NetworkModel, bank: Bank, basis: JudgeBasis): Verdict | null {
+// An aged stage is a group of its own, and may make too many combinations.
+function ofStages(judged: () => Verdict): Verdict | null {
   try {
-    return quickJudge(model, bank, basis).verdict;
+    return judged();
   } catch (error) {
     if (error instanceof InputProblem && error.code === 'too-many-levels') return null;
     throw error;

@@ -27,7 +27,7 @@ export function judgementReasons(judged: Judged, bank: Bank, judgement: Judgemen
 
 function watchCode(duty: Duty): string {
   if (duty.ratio === null || duty.ratio <= 1) return 'limit.near';
-  return duty.name === 'inrush current' ? 'inrush.assumedInductance' : 'limit.exceededAlready';
+  return duty.name.startsWith('inrush current') ? 'inrush.assumedInductance' : 'limit.exceededAlready';
 }
 
 function dutyReason(code: string, duty: Duty): Remark {

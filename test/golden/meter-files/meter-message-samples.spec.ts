@@ -106,6 +106,15 @@ describe('a load profile of a read-out', () => {
     });
   });
 
+  it('may split reactive power into quadrants, which lag in I and II and lead in III and IV', async () => {
+    expect(await read('profile-readout-quadrants.txt', { siteTimeZone: 'UTC' })).toMatchObject({
+      begins: ['2024-05-06T00:00', '2024-05-06T00:15', '2024-05-06T00:30', '2024-05-06T00:45'],
+      kw: [40, 41, 0, 0],
+      lagging: [20, 0, 2.25, 0],
+      leading: [0, 3.5, 0, 1.75],
+    });
+  });
+
   it('repeats its head behind a gap; intervals cut short and blanks are left out', async () => {
     const found = await read('profile-readout-gap-and-status.txt');
     expect(found).toMatchObject({

@@ -554,6 +554,23 @@ describe('NEM12', () => {
   });
 });
 
+describe('NEM12 in small units', () => {
+  it('nem12-small-units-5-min: Wh, varh and Mvarh become kW and kvar', async () => {
+    const { record } = await readMeterText(sample('nem12-small-units-5-min'));
+    expect([record.intervalS, record.beginS.length]).toEqual([300, 288]);
+    // 1 kWh in five minutes are 12 kW; each interval has a Wh more
+    record.activeKw.forEach((kw, i) => {
+      expect(kw).toBeCloseTo(12 + 0.012 * i, 9);
+    });
+    // 500 varh lag in the first half of the day, 0.00025 Mvarh lead in the second
+    const half = (first: number, second: number) => [...Array(144).fill(first), ...Array(144).fill(second)];
+    expect(Array.from(record.laggingKvar)).toEqual(half(6, 0));
+    record.leadingKvar.forEach((kvar, i) => {
+      expect(kvar).toBeCloseTo(half(0, 3)[i]!, 12);
+    });
+  });
+});
+
 describe('the notes of the table', () => {
   it('are each raised by a sample, so that none is a note no file can have', async () => {
     const folder = fileURLToPath(new URL('.', import.meta.url));

@@ -60,6 +60,12 @@ const TWO = { kw: [40.5, 41.5], lagging: [20, 24] };
 describe('ESPI feeds', () => {
   it.each<[string, string, Expected]>([
     ['espi-plain', 'are joined by links written with and without host, before and behind each other', PLAIN],
+    [
+      'espi-lagging-and-leading',
+      'with lagging and leading energy in types of their own',
+      // 125 tens of varh in a quarter of an hour are 5 kvar
+      { kw: [40.5, 41.5, 39], lagging: [20, 24, 0], leading: [0, 0, 5] },
+    ],
     ['espi-without-links', 'without links are joined by order', { ...TWO, notes: ['espi-joined-by-order'] }],
     ['espi-without-times', 'without times take them from the place in the block', PLAIN],
     [

@@ -9,8 +9,21 @@ import { noteCodes, questionOf, readMeterText, refusalOf } from '../../support/m
 const quarters = { begin: '2024-05-06T00:00', intervalS: 900 };
 const none = (count: number) => Array<number>(count).fill(0);
 
+const FOUR = {
+  begin: '2024-05-06T00:00',
+  intervalS: 900,
+  kw: [40.5, 41.5, 42.5, 43.5],
+  lagging: [20.25, 21, 21.75, 22.5],
+};
+
 describe('numbers and letters', () => {
   it.each<[string, string, Expected]>([
+    [
+      'utf-16-text',
+      'a byte order mark says UTF-16, and it is said',
+      { ...FOUR, notes: ['encoding-converted', 'decimal-mark-settled'] },
+    ],
+    ['utf-8-mark', 'a byte order mark before UTF-8 belongs to no name', { ...FOUR, notes: ['decimal-mark-settled'] }],
     [
       'latin1-header',
       'an eight-bit code is converted, and it is said',
