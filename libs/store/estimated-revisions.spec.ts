@@ -6,7 +6,6 @@ import { openConnections } from './open-store.js';
 import { ProposalFile } from './proposal-file.js';
 import { Revision } from './revision.js';
 import { insertRevision } from './revisions.js';
-import { insertSite } from './sites.js';
 import { Store } from './store.js';
 
 const NOW = new Date('2026-01-31T10:20:30.456Z');
@@ -48,10 +47,10 @@ for (const { name, available, create } of databases) {
         queue: null,
       });
       await before.write(async (manager) => {
-        await insertSite(
-          manager,
-          { id: 's', organisationId: 'first', name: 'Alder Works', document: { name: 'Alder Works' } },
-          NOW,
+        // by hand: the table had no organisations yet
+        await manager.query(
+          `INSERT INTO site ("id", "number", "name", "document", "version", "lastRevision", "createdAt", "updatedAt")
+           VALUES ('s', 1, 'Alder Works', '{"name":"Alder Works"}', 1, 0, '2026-01-31', '2026-01-31')`,
         );
         await manager.query(
           `INSERT INTO load_record ("id", "siteId", "hash", "intervalS", "firstS", "endS", "intervalCount", "repaired", "duplicates", "notes", "summary", "quality", "fileHash", "fileBytes", "createdAt")

@@ -1,13 +1,13 @@
 import fc from 'fast-check';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
-import { databases, type TestDatabase } from '../support/databases.js';
+import { type TestDatabase, usualDatabases } from '../support/databases.js';
 import { startServer, type TestServer } from '../support/test-server.js';
 import { meterFile, siteFile } from './site-builder.js';
 
 const SEED = 20_260_131;
 const RUNS = process.env.VARWRIGHT_SOAK === '1' ? 2000 : 150;
 
-for (const { name, available, create } of databases) {
+for (const { name, available, create } of usualDatabases) {
   describe.runIf(available)(`bodies altered at random, on ${name} (seed ${SEED})`, () => {
     let database: TestDatabase;
     let server: TestServer;

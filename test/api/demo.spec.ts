@@ -2,14 +2,14 @@ import { afterAll, beforeAll, describe, expect, it, vi } from 'vitest';
 import { demoLoad } from '#apps/server/demo/demo-load.js';
 import { DEMO_SITE } from '#apps/server/demo/demo-site.js';
 import { readMeterFile } from '#libs/meter-files/read-meter-file.js';
-import { databases, type TestDatabase } from '../support/databases.js';
+import { type TestDatabase, usualDatabases } from '../support/databases.js';
 import { startServer, type TestServer } from '../support/test-server.js';
 import { meterFile, siteFile } from './site-builder.js';
 
 /** Seconds, on a machine that does other things as well. */
 const SOON = { timeout: 30_000, interval: 100 };
 
-for (const { name, available, create } of databases) {
+for (const { name, available, create } of usualDatabases) {
   describe.runIf(available)(`the example of a new installation, on ${name}`, () => {
     let database: TestDatabase;
     let server: TestServer;

@@ -5,7 +5,7 @@ import { planContent } from '#libs/contract/plan-content.js';
 import { readSite } from '#libs/contract/read-site.js';
 import { assessEstimate, planEstimate, withRobustness } from '#libs/engine/index.js';
 import { putEstimateInWords } from '#libs/present/put-in-words.js';
-import { databases, type TestDatabase } from '../support/databases.js';
+import { type TestDatabase, usualDatabases } from '../support/databases.js';
 import { startServer, type TestServer } from '../support/test-server.js';
 import { meterFile, siteFile } from './site-builder.js';
 
@@ -14,7 +14,7 @@ const estimate = {
   equipment: [{ name: 'presses', count: 8, ratedKw: 37, efficiencyPct: 92, powerFactor: 0.78, loadFactor: 0.8 }],
 };
 
-for (const { name, available, create } of databases) {
+for (const { name, available, create } of usualDatabases) {
   describe.runIf(available)(`plans without a load record over HTTP, on ${name}`, () => {
     let database: TestDatabase;
     let server: TestServer;

@@ -2,7 +2,7 @@ import { mkdtempSync, readdirSync, rmSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
-import { databases, type TestDatabase } from '../support/databases.js';
+import { type TestDatabase, usualDatabases } from '../support/databases.js';
 import { startServer, type TestServer } from '../support/test-server.js';
 import { siteFile } from './site-builder.js';
 
@@ -19,7 +19,7 @@ function slots(from: number, to: number, kw: (slot: number) => number): string {
 
 const steady = (slot: number) => 100 + (slot % 7);
 
-for (const { name, available, create } of databases) {
+for (const { name, available, create } of usualDatabases) {
   describe.runIf(available)(`a record that is extended over HTTP, on ${name}`, () => {
     let database: TestDatabase;
     let server: TestServer;

@@ -2,7 +2,7 @@ import { mkdtempSync, readdirSync, rmSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
-import { databases, type TestDatabase } from '../support/databases.js';
+import { type TestDatabase, usualDatabases } from '../support/databases.js';
 import { minuteFile } from '../support/minute-file.js';
 import { startServer, type TestServer } from '../support/test-server.js';
 import { meterFile, siteFile } from './site-builder.js';
@@ -10,7 +10,7 @@ import { meterFile, siteFile } from './site-builder.js';
 /** Nine months of minutes: 17 MB. */
 const LARGE = minuteFile(400_000);
 
-for (const { name, available, create } of databases) {
+for (const { name, available, create } of usualDatabases) {
   describe.runIf(available)(`a meter file that is read as a job, on ${name}`, () => {
     let database: TestDatabase;
     let server: TestServer;

@@ -1,5 +1,5 @@
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
-import { databases, type TestDatabase } from '../support/databases.js';
+import { type TestDatabase, usualDatabases } from '../support/databases.js';
 import { startServer, type TestServer } from '../support/test-server.js';
 import { siteFile } from './site-builder.js';
 
@@ -9,7 +9,7 @@ function ambiguous(day: string, header = 'begin,active (kW),reactive (kvar)'): s
   return `${header}\n${Array.from({ length: 36 }, (_, i) => `${day} ${clock(i)},5,1\n`).join('')}`;
 }
 
-for (const { name, available, create } of databases) {
+for (const { name, available, create } of usualDatabases) {
   describe.runIf(available)(`answers kept under a name, on ${name}`, () => {
     let database: TestDatabase;
     let server: TestServer;

@@ -7,11 +7,11 @@ import { recordBytes } from '#libs/contract/record-hash.js';
 import { readMeterFile } from '#libs/meter-files/read-meter-file.js';
 import { openStore } from '#libs/store/open-store.js';
 import { readRecord } from '#libs/store/records.js';
-import { databases, type TestDatabase } from '../support/databases.js';
+import { type TestDatabase, usualDatabases } from '../support/databases.js';
 import { startServer, type TestServer } from '../support/test-server.js';
 import { meterFile, siteFile } from './site-builder.js';
 
-for (const { name, available, create } of databases) {
+for (const { name, available, create } of usualDatabases) {
   describe.runIf(available)(`load records over HTTP, on ${name}`, () => {
     let database: TestDatabase;
     let server: TestServer;

@@ -1,7 +1,7 @@
 import { createHash } from 'node:crypto';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { dataSourceFor, readAddress } from '#libs/store/data-source.js';
-import { databases, type TestDatabase } from '../support/databases.js';
+import { type TestDatabase, usualDatabases } from '../support/databases.js';
 import { COMMISSIONED } from '../support/made-review.js';
 import { savedAfterwards } from '../support/sign-afterwards.js';
 import { startServer, type TestServer } from '../support/test-server.js';
@@ -13,7 +13,7 @@ const site = (name: string) =>
 const SIGNED = { name: 'M. Okafor', licence: 'REC 10442', jurisdiction: 'Ireland' };
 const REASON = { reason: 'seen on site' };
 
-for (const { name, available, create } of databases) {
+for (const { name, available, create } of usualDatabases) {
   describe.runIf(available)(`the review of a revision over HTTP, on ${name}`, () => {
     let database: TestDatabase;
     let server: TestServer;

@@ -7,7 +7,7 @@ import { databases, type TestDatabase } from '../support/databases.js';
 import { minuteFile } from '../support/minute-file.js';
 import { type ServerProcess, startProcess } from '../support/server-process.js';
 
-const LARGE = minuteFile(400_000);
+const LARGE = minuteFile(200_000);
 
 for (const { name, available, create } of databases) {
   describe.runIf(available)(`a server that is killed while it reads a file as a job, on ${name}`, () => {
@@ -45,7 +45,7 @@ for (const { name, available, create } of databases) {
         expect(events).toMatch(/event: done\n/);
         const made = await records(second);
         expect(made).toHaveLength(before + 1);
-        expect(made[0].record.intervals).toBe(400_000);
+        expect(made[0].record.intervals).toBe(200_000);
         expect(spooled()).toEqual([]);
         await second.end('SIGTERM');
       },

@@ -164,7 +164,8 @@ describe('an answer', () => {
     expect(code).toBe(0);
     expect(stdout).toMatch(/Invented Mill[\s\S]*within limits/);
     expect(stdout).toContain('not permission to energise');
-    expect(stderr).toBe('');
+    // nothing but how far it is, which a slow machine says too
+    expect(stderr.replace(/^\d+ % done, .* left\n/gm, '')).toBe('');
   });
 
   it('of scan has nominal and every corner at the level asked for', () => {

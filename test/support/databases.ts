@@ -4,6 +4,7 @@ import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import pg from 'pg';
 import { inject } from 'vitest';
+import { SOAKED } from './soak.js';
 
 /** A database of its own for one test, and the way to be rid of it. */
 export interface TestDatabase {
@@ -17,6 +18,12 @@ export const databases: { name: 'SQLite' | 'PostgreSQL'; available: boolean; cre
   { name: 'SQLite', available: true, create: createSqlite },
   { name: 'PostgreSQL', available: inject('postgresUrl') !== null, create: createPostgres },
 ];
+
+/**
+ * The databases of a test that goes over HTTP and asks the store for nothing the tests of the store itself do not ask on
+ * both: SQLite in the usual run, both in the long one.
+ */
+export const usualDatabases = SOAKED ? databases : databases.slice(0, 1);
 
 async function createSqlite(): Promise<TestDatabase> {
   const dir = mkdtempSync(join(tmpdir(), 'varwright-sqlite-'));
