@@ -39,7 +39,8 @@ export default defineConfig({
           'test/support/**/*.spec.ts',
         ],
         20_000,
-        { exclude: withDatabases },
+        // pure functions keep nothing between one test and the next, so their files may share what is loaded
+        { exclude: withDatabases, isolate: false },
       ),
       project('store', withDatabases, 30_000, { globalSetup: startPostgres }),
       project('whole', ['test/{golden,api,faults,browser}/**/*.spec.ts'], 120_000, {
