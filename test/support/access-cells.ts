@@ -120,7 +120,8 @@ async function seen(server: TestServer, { route, role }: Cell, path: string, ask
   });
   let text = await response.text();
   for (const id of path.split('/').filter((part) => part.length > 20)) text = text.replaceAll(id, 'ID');
-  for (const count of path.match(/(?<=\/)\d+(?=\/|$)/g) ?? []) text = text.replace(new RegExp(`\\b${count}\\b`, 'g'), 'ID');
+  for (const count of path.match(/(?<=\/)\d+(?=\/|$)/g) ?? [])
+    text = text.replace(new RegExp(`\\b${count}\\b`, 'g'), 'ID');
   return { status: response.status, type: response.headers.get('content-type'), text };
 }
 
