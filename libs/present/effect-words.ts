@@ -1,22 +1,37 @@
 import type { Remark } from '#libs/engine/index.js';
-import { formatShare, GAP } from './format-number.js';
+import { formatFixed, formatQuantity, formatShare, GAP } from './format-number.js';
+
+type Effect = NonNullable<Remark['effect']>;
+
+/** Amounts of money an assumption may move. */
+export const MONEY_FIGURES: Record<string, string> = {
+  'money.npv': 'net present value',
+  'money.savingPerYear': 'saving a year',
+};
 
 /**
  * What an assumption moves, if it is wrong.
- * @param effect of a remark
+ * @param effect of a remark: a duty as a share of its limit, any other figure as it is
  * @returns "voltage distortion 62 % to 104 % of its limit, and the verdict changes"
  */
-export function effectWords({ figure, low, high, changesVerdict }: NonNullable<Remark['effect']>): string {
-  const share = (ratio: number): string => `${formatShare(100 * ratio)}${GAP}%`;
-  const [least, most] = [share(low), share(high)];
-  const duty = figure.replace(/^duties\./, '');
-  const moved =
-    duty === ''
-      ? 'No row moves'
-      : least === most
-        ? `${capital(duty)} stays at ${most} of its limit`
-        : `${capital(duty)} ${least} to ${most} of its limit`;
-  return changesVerdict ? `${moved}, and the verdict changes` : moved;
+export function effectWords(effect: Effect): string {
+  const moved = capital(movedWords(effect));
+  return effect.changesVerdict ? `${moved}, and the verdict changes` : moved;
+}
+
+function movedWords({ figure, low, high }: Effect): string {
+  if (figure === '') return 'no row moves';
+  const duty = /^duties\.(.+)$/.exec(figure)?.[1];
+  if (duty !== undefined) {
+    const [least, most] = [low, high].map((ratio) => `${formatShare(100 * ratio)}${GAP}%`);
+    return least === most ? `${duty} stays at ${most} of its limit` : `${duty} ${least} to ${most} of its limit`;
+  }
+  const money = MONEY_FIGURES[figure];
+  const [least, most] = [low, high].map((value) =>
+    money === undefined ? formatQuantity(value, '') : formatFixed(value, 0),
+  );
+  const name = money ?? figure;
+  return least === most ? `${name} stays at ${most}` : `${name} ${least} to ${most}`;
 }
 
 function capital(text: string): string {

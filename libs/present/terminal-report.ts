@@ -17,8 +17,8 @@ import { plainName } from './plain-name.js';
 import { estimateWords, proposedWords } from './proposed-words.js';
 import { gradeWords, MONTH_HEADS, monthCells, type QualityStated, qualityRows } from './quality-words.js';
 import { remarkConsequence, remarkSentence } from './remark-words.js';
-import { HISTORY_HEADS, historyRows } from './stage-history-words.js';
 import { spareWaysLines } from './spare-ways-lines.js';
+import { HISTORY_HEADS, historyRows } from './stage-history-words.js';
 import { finished, tableLines, wrapped } from './terminal-lines.js';
 import { countDuties, NO_PERMISSION, verdictWords } from './verdict-words.js';
 

@@ -74,6 +74,7 @@ export function drawAssumptions(paper: Paper, outcome: BankOutcome): void {
   paper.heading(
     '4',
     `Assumptions: ${count === 0 ? 'none' : `${count} ${count === 1 ? 'value was' : 'values were'} not given`}`,
+    { keep: 100 },
   );
   if (count === 0) {
     paper.paragraph(['Every value was given.']);

@@ -1,5 +1,6 @@
 import { useState } from 'react';
 import type { EstimateResult, Remark, Result } from '#libs/engine/index.js';
+import { MONEY_FIGURES } from '#libs/present/effect-words.js';
 import { formatNumber, formatQuantity, formatRange, inShownMark } from '#libs/present/format-number.js';
 import { messageOf, remarkConsequence } from '#libs/present/remark-words.js';
 import { siteAddress, stationOfPath } from '../address.js';
@@ -169,11 +170,6 @@ function spreadOf({ figure, low, high }: NonNullable<Remark['effect']>): number 
   const whole = figure.startsWith('money.') ? Math.max(Math.abs(low), Math.abs(high), 1) : 1;
   return Math.abs(high - low) / whole;
 }
-
-const MONEY_FIGURES: Record<string, string> = {
-  'money.npv': 'net present value',
-  'money.savingPerYear': 'saving a year',
-};
 
 function rangeWords({ figure, low, high }: NonNullable<Remark['effect']>): string {
   const duty = /^duties\.(.+)$/.exec(figure)?.[1];
