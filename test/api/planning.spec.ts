@@ -6,11 +6,11 @@ import { zoneTableOf } from '#libs/contract/time-zone.js';
 import { assessBank, ENGINE_VERSION, planBank, withRobustness } from '#libs/engine/index.js';
 import { readMeterFile } from '#libs/meter-files/read-meter-file.js';
 import { putInWords } from '#libs/present/put-in-words.js';
-import { databases, type TestDatabase } from '../support/databases.js';
+import { type TestDatabase, usualDatabases } from '../support/databases.js';
 import { startServer, type TestServer } from '../support/test-server.js';
 import { meterFile, siteFile } from './site-builder.js';
 
-for (const { name, available, create } of databases) {
+for (const { name, available, create } of usualDatabases) {
   describe.runIf(available)(`plans and assessments over HTTP, on ${name}`, () => {
     let database: TestDatabase;
     let server: TestServer;

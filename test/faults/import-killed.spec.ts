@@ -3,13 +3,13 @@ import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { DEMO_SITE } from '#apps/server/demo/demo-site.js';
-import { databases, type TestDatabase } from '../support/databases.js';
+import { type TestDatabase, usualDatabases } from '../support/databases.js';
 import { minuteFile } from '../support/minute-file.js';
 import { type ServerProcess, startProcess } from '../support/server-process.js';
 
 const LARGE = minuteFile(200_000);
 
-for (const { name, available, create } of databases) {
+for (const { name, available, create } of usualDatabases) {
   describe.runIf(available)(`a server that is killed while it reads a file as a job, on ${name}`, () => {
     let database: TestDatabase;
     let siteId: string;
