@@ -62,11 +62,11 @@ export function bankColumn(stages: readonly ComplexColumn[], vector: ArrayLike<n
 }
 
 // A function of its own, so that a long column is not begun in code that is still slow.
-function addInto(out: ComplexColumn, { re, im }: ComplexColumn, count: number): void {
+function addInto({ re: sumRe, im: sumIm }: ComplexColumn, { re, im }: ComplexColumn, count: number): void {
   if (count === 0) return;
-  for (let i = 0; i < out.re.length; i++) {
-    out.re[i]! += count * re[i]!;
-    out.im[i]! += count * im[i]!;
+  for (let i = 0; i < sumRe.length; i++) {
+    sumRe[i]! += count * re[i]!;
+    sumIm[i]! += count * im[i]!;
   }
 }
 
