@@ -15,6 +15,7 @@ import { copyNote, pointAssumption, reasonsBeside, verdictBeside } from './reaso
 import type { Result } from './result.js';
 import { rangeOf } from './turned-range.js';
 import { type Operated, operate, type Study } from './study.js';
+import { unusualRecord, unusualSite } from './unusual-inputs.js';
 import type { WaysWeighed } from './weighed-bank.js';
 
 /** What is said of a bank besides what its own figures say. */
@@ -77,6 +78,8 @@ export function outcomeOf(kind: Outcome['kind'], study: Study, choice: Choice): 
       ...said.reasons,
       ...range.reasons,
       ...reasons(study, bank, operated, judgement),
+      ...unusualSite(study.site, bank),
+      ...unusualRecord(study, bank),
       ...reasonsBeside(study, bank, { control, duties: judgement.duties }, beside),
     ],
     assumptions: [
