@@ -7,7 +7,7 @@ import { openStore } from '#libs/store/open-store.js';
 import { insertSite } from '#libs/store/sites.js';
 import type { Store } from '#libs/store/store.js';
 import { databases, type TestDatabase } from '../../test/support/databases.js';
-import { InProcessJobs, type Runner } from './in-process-jobs.js';
+import { InProcessJobs, type InProcessOptions, type Runner } from './in-process-jobs.js';
 
 const NOW = new Date('2026-01-31T10:00:00Z');
 const LEASE_S = 0.4;
@@ -48,13 +48,14 @@ for (const { name, available, create } of databases) {
         throw new Error('a fault of ours');
       },
     };
-    const open = (given = runners) =>
+    const open = (given = runners, options: Partial<InProcessOptions> = {}) =>
       new InProcessJobs({
         store,
         runners: given,
         leaseS: LEASE_S,
         describe: (error) => ({ message: (error as Error).message }),
         onFault: (error) => faults.push(error),
+        ...options,
       });
 
     beforeEach(async () => {
@@ -116,6 +117,25 @@ for (const { name, available, create } of databases) {
       expect(await store.read((manager) => manager.findOneBy(Job, { id }))).toMatchObject({ state: 'queued' });
       jobs = open({ ...runners, endless: runners.quick! });
       expect(await jobs.result(id, 10)).toMatchObject({ state: 'done', attempt: 2 });
+    });
+
+    it('are put back once, though another is being looked for while the process closes', async () => {
+      await jobs.close();
+      let hold = Promise.resolve();
+      const held = { skipsLocked: store.skipsLocked, read: store.read.bind(store) } as Store;
+      held.write = (work) => hold.then(() => store.write(work));
+      jobs = open(runners, { store: held, atOnce: 2, leaseS: 60 });
+      const { id } = await jobs.submit(request('x', 'endless'));
+      await vi.waitFor(() => expect(started).toHaveLength(1));
+      hold = sleep(2 * 1000);
+      // every look from now on is late by longer than the wait between two looks
+      await sleep(1200);
+      hold = Promise.resolve();
+      await jobs.close();
+      expect(await store.read((manager) => manager.findOneBy(Job, { id }))).toMatchObject({
+        state: 'queued',
+        attempt: 1,
+      });
     });
 
     it('are kept from others while their worker lives, however long they take', async () => {

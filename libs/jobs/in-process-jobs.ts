@@ -96,8 +96,9 @@ export class InProcessJobs implements Jobs {
   async close(): Promise<void> {
     this.#open = false;
     this.#wake.abort();
-    for (const { stop } of this.#working.values()) stop.abort();
+    // a claim on its way first: it would take again what is put back here, and give it back as one attempt more
     await this.#loop;
+    for (const { stop } of this.#working.values()) stop.abort();
     await Promise.all([...this.#working.values()].map(({ ended }) => ended));
   }
 

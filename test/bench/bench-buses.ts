@@ -19,7 +19,7 @@ const LEVELS = 64;
 const ORDERS = 2451;
 const CORNERS = 8;
 
-/** |Z| in a network of six buses; the twin factorises the network at every level, corner and order. */
+/** 1/|Z|² in a network of six buses; the twin factorises the network at every level, corner and order. */
 export function busesWorks(): TwinWork[] {
   return [
     scanOf("the bank's bus", 1, 1 / 60),
@@ -42,7 +42,7 @@ function scanOf(what: string, buses: number, limit: number): TwinWork {
   const columnsOf = (network: number): BusColumns[] =>
     buses === 1 ? [busColumns(model, network, model.bankBus, ordersH)] : networkColumns(model, network, ordersH);
   return {
-    title: `scan of ${what} of ${BUSES}, ${LEVELS} levels, ${CORNERS} corners, ${ORDERS} orders, factorised at every point`,
+    title: `1/|Z|² of ${what} of ${BUSES}, ${LEVELS} levels, ${CORNERS} corners, ${ORDERS} orders, factorised at every point`,
     twin: 'buses',
     limit,
     runs: 5,

@@ -1,11 +1,10 @@
-// |Z| at every bus of a network: the nodal admittance matrix with the bank in it is factorised at every corner, level and
+// 1/|Z|² at every bus of a network: the nodal admittance matrix with the bank in it is factorised at every corner, level and
 // order, and one column solved for a bus.
 // Input: orders m, levels L, corners K, nodes n, buses B, bank's node, node per bus[B], counts[L]; per corner
 // Y[m][n][n] re, im in turn, stage re[m], im[m].
-// Output: |Z| corner after corner, bus after bus, level after level, m each.
+// Output: 1/|Z|² corner after corner, bus after bus, level after level, m each.
 #include "twin.h"
 #include <complex.h>
-#include <math.h>
 #include <string.h>
 
 #define MOST_NODES 16
@@ -83,7 +82,7 @@ int main(int argc, char **argv) {
           a[bank * n + bank] += CMPLX(counts[level] * re[i], counts[level] * im[i]);
           factorise(n, a, row);
           for (long b = 0; b < buses; b++)
-            out[((k * buses + b) * levels + level) * m + i] = sqrt(size2(own(n, a, row, (long)bus_node[b])));
+            out[((k * buses + b) * levels + level) * m + i] = 1 / size2(own(n, a, row, (long)bus_node[b]));
         }
     }
     times[run] = now_ns() - from;

@@ -1,4 +1,5 @@
 import { describe, expect, it } from 'vitest';
+import { LEAST_SIEMENS } from './bus-admittance.js';
 import { type BusColumns, bankColumn, seenSquareInto } from './bus-columns.js';
 import { invertInto } from './nodal-impedance.js';
 import { scanBusesInto, scanEqualStagesInto } from './scan-into.js';
@@ -54,7 +55,7 @@ describe('the scan of every bus at many levels', () => {
         for (const [i, h] of orders.entries()) {
           const [re, im] = impedances(h, [count * stage.re[i]!, count * stage.im[i]!], bankBus)[2 * bus]!;
           const found = out[(bus * counts.length + level) * orders.length + i]!;
-          expect(found / Math.hypot(re, im)).toBeCloseTo(1, 12);
+          expect(found * (re * re + im * im)).toBeCloseTo(1, 12);
         }
       }
     }
@@ -69,10 +70,23 @@ describe('the scan of every bus at many levels', () => {
       for (const [level, count] of counts.entries()) {
         seenSquareInto(each, bankColumn([stage], Int32Array.of(count), orders.length), square);
         for (const [i, s] of square.entries()) {
-          expect(out[(bus * counts.length + level) * orders.length + i]! * Math.sqrt(s)).toBeCloseTo(1, 12);
+          expect(out[(bus * counts.length + level) * orders.length + i]! / s).toBeCloseTo(1, 12);
         }
       }
     }
+  });
+
+  it('has an end where supply and bank cancel without loss', () => {
+    const lossless = (b: number) => ({ re: Float64Array.of(0), im: Float64Array.of(b) });
+    const out = new Float64Array(6);
+    scanBusesInto(
+      [{ bank: lossless(-0.4), other: null }],
+      lossless(0.2),
+      Float64Array.from(out, (_, n) => n),
+      out,
+    );
+    expect(out[2]).toBe(LEAST_SIEMENS ** 2);
+    expect(out[3]).toBeCloseTo(0.04, 14);
   });
 
   it('at the bus of the bank is the scan of one bus', () => {
@@ -80,6 +94,6 @@ describe('the scan of every bus at many levels', () => {
     const [one, every] = [0, 0].map(() => new Float64Array(counts.length * orders.length));
     scanEqualStagesInto(bank!.bank, stage, counts, one!);
     scanBusesInto([bank!], stage, counts, every!);
-    for (const [k, ohm] of one!.entries()) expect(every![k]! / ohm).toBeCloseTo(1, 14);
+    for (const [k, ohm] of one!.entries()) expect(every![k]! * ohm ** 2).toBeCloseTo(1, 13);
   });
 });

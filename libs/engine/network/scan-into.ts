@@ -91,13 +91,14 @@ function oneLevelInto({ a, b, c }: Quadratic, count: number, out: Float64Array, 
 }
 
 /**
- * |Z(h)| at every bus for a bank of equal stages, many levels at once. With the bank's bus at Y₀ and w = z_ii − z_ib²·Y₀
- * the rank-1 change is Z_ii = (Y₀·z_ii + n·y·w)/(Y₀ + n·y): numerator and denominator are quadratics in n over tables, and
- * the denominator is every bus's own.
+ * 1/|Z(h)|² at every bus for a bank of equal stages, many levels at once: what resonances are looked for on, and a root
+ * away from what is shown. With the bank's bus at Y₀ and w = z_ii − z_ib²·Y₀ the rank-1 change is
+ * Z_ii = (Y₀·z_ii + n·y·w)/(Y₀ + n·y): numerator and denominator are quadratics in n over tables, and the denominator is
+ * every bus's own.
  * @param buses columns of every bus over orders, length m each
  * @param stage y of one stage over the same orders [S]
  * @param counts connected stages per level, length L
- * @param out receives |Z| [Ω], bus after bus, level after level, length buses·L·m
+ * @param out receives 1/|Z|² [S²], bus after bus, level after level, length buses·L·m
  * @source method-network
  */
 export function scanBusesInto(
@@ -118,12 +119,40 @@ export function scanBusesInto(
   const atBus = (bus: number): Float64Array => out.subarray(bus * counts.length * m, (bus + 1) * counts.length * m);
   const bankBus = above.indexOf(null);
   const own = bankBus < 0 ? new Float64Array(counts.length * m) : atBus(bankBus);
-  levelsInto(below, counts, own);
+  squaresInto(below, counts, own);
   for (let bus = 0; bus < buses.length; bus++) {
     const q = above[bus]!;
     if (q !== null) quotientsInto(q, counts, own, atBus(bus));
     else if (bus !== bankBus) atBus(bus).set(own);
   }
+}
+
+function squaresInto(q: Quadratic, counts: Float64Array, out: Float64Array): void {
+  const m = q.a.length;
+  let level = 0;
+  for (; !q.delicate && level + LEVELS_AT_ONCE <= counts.length; level += LEVELS_AT_ONCE) {
+    fourSquaresInto(q, counts.subarray(level, level + LEVELS_AT_ONCE), out.subarray(level * m));
+  }
+  for (; level < counts.length; level++) oneSquareInto(q, counts[level]!, out.subarray(level * m, (level + 1) * m));
+}
+
+function fourSquaresInto({ a, b, c }: Quadratic, counts: Float64Array, out: Float64Array): void {
+  const m = a.length;
+  const [n0, n1, n2, n3] = [counts[0]!, counts[1]!, counts[2]!, counts[3]!];
+  const [second, third, fourth] = [m, 2 * m, 3 * m];
+  for (let i = 0; i < m; i++) {
+    const ai = a[i]!;
+    const bi = b[i]!;
+    const ci = c[i]!;
+    out[i] = ai + n0 * (bi + n0 * ci);
+    out[second + i] = ai + n1 * (bi + n1 * ci);
+    out[third + i] = ai + n2 * (bi + n2 * ci);
+    out[fourth + i] = ai + n3 * (bi + n3 * ci);
+  }
+}
+
+function oneSquareInto({ a, b, c }: Quadratic, count: number, out: Float64Array): void {
+  for (let i = 0; i < a.length; i++) out[i] = Math.max(LEAST_SQUARE, a[i]! + count * (b[i]! + count * c[i]!));
 }
 
 function emptyQuadratic(m: number): Quadratic {
@@ -156,14 +185,14 @@ function numeratorInto(
   }
 }
 
-// |Z_ii| = |Y₀·z_ii + n·y·w|·|Z_bb|, the latter being there already.
+// 1/|Z_ii|² = |Y₀ + n·y|²/|Y₀·z_ii + n·y·w|², the former being there already.
 function quotientsInto({ a, b, c }: Quadratic, counts: Float64Array, own: Float64Array, out: Float64Array): void {
   const m = a.length;
   for (let level = 0; level < counts.length; level++) {
     const count = counts[level]!;
     const offset = level * m;
     for (let i = 0; i < m; i++) {
-      out[offset + i] = own[offset + i]! * Math.sqrt(a[i]! + count * (b[i]! + count * c[i]!));
+      out[offset + i] = own[offset + i]! / (a[i]! + count * (b[i]! + count * c[i]!));
     }
   }
 }
