@@ -98,7 +98,7 @@ function Changes({ reevaluation, currency }: { reevaluation: Reevaluation; curre
         Need, power factor, cost, operations, distortion and duties; what is not listed is as it was.
       </p>
       <RowTable
-        name="What changed, in numbers"
+        name="Changed figures"
         heads={CHANGE_HEADS}
         right={[1, 2, 3]}
         rows={rows.map((cells, at) => [
@@ -169,7 +169,7 @@ function Inputs({ reevaluation, siteId }: { reevaluation: Reevaluation; siteId: 
     <section className="section" aria-labelledby="inputs">
       <h2 id="inputs">What was entered otherwise</h2>
       <RowTable
-        name="What was entered otherwise"
+        name="Changed fields"
         heads={INPUT_HEADS}
         rows={rows.map(([path = '', before, after]) => [
           <a key={path} href={siteAddress(siteId, stationOfPath(path), { field: path })}>
@@ -192,7 +192,7 @@ function Alike({ reevaluation }: { reevaluation: Reevaluation }) {
       <p className="caption">
         By the day, over the same hours of the week and the same months, since their lengths differ.
       </p>
-      <RowTable name="Both records on like terms" heads={LIKE_HEADS} right={[1, 2]} rows={rows} />
+      <RowTable name="Both records" heads={LIKE_HEADS} right={[1, 2]} rows={rows} />
     </section>
   );
 }

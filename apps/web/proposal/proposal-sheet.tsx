@@ -165,6 +165,11 @@ function Changes({ revisions }: { revisions: readonly RevisionHeadShown[] }) {
           </p>
         </div>
       </div>
+      <p className="row gap">
+        <a href={`/sites/${now.siteId}/revisions/${before.revision}/differences/${now.revision}`}>
+          Field by field, inputs and results
+        </a>
+      </p>
     </section>
   );
 }

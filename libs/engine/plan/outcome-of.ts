@@ -8,6 +8,7 @@ import { deviceFigures } from './device-figures.js';
 import { figures } from './figures.js';
 import { basisOf, overallVerdict } from './judge-basis.js';
 import { type BankChoice, judgeWhole, rivalOf } from './judged-bank.js';
+import { moneyFigures } from './money-figures.js';
 import type { Outcome } from './outcome.js';
 import { reasons } from './reasons.js';
 import { copyNote, pointAssumption, reasonsBeside, verdictBeside } from './reasons-beside.js';
@@ -93,6 +94,7 @@ export function outcomeOf(kind: Outcome['kind'], study: Study, choice: Choice): 
   result.figures = [
     ...figures(study, bank, operated, result),
     ...(equipment === null ? [] : deviceFigures(study, bank, control, equipment)),
+    ...(result.money === null ? [] : moneyFigures(result.money, study.site.papers)),
   ];
   return {
     kind,
