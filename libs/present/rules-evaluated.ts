@@ -1,6 +1,7 @@
 import type { EstimateResult, Result } from '#libs/engine/index.js';
 import { formatNumber } from './format-number.js';
 import { RECORD_MESSAGES } from './record-messages.js';
+import { UNUSUAL_MESSAGES } from './unusual-messages.js';
 
 /** How many rules a result was put to, triggered or not. */
 export interface RulesEvaluated {
@@ -14,8 +15,13 @@ export interface RulesEvaluated {
   assumptions: number;
   /** signs of a fault that the record's values were searched for */
   signs: number;
+  /** inputs held against what is built or agreed */
+  inputs: number;
 }
 
+const UNUSUAL = Object.keys(UNUSUAL_MESSAGES);
+/** What can only be looked at beside a record. */
+const BESIDE_RECORD = ['record.moreKvarhThanKwh', 'bank.aboveLoad', 'loads.aboveRecord', 'currentTransformer.unusual'];
 const SIGNS = Object.keys(RECORD_MESSAGES).filter((code) => code.startsWith('sign.')).length;
 
 /**
@@ -32,6 +38,7 @@ export function rulesEvaluated(result: Result | EstimateResult): RulesEvaluated 
     devices: devices.filter(({ state }) => state === 'fits' || state === 'short').length,
     assumptions: assumptions.filter(({ effect }) => effect !== null).length,
     signs: record === null ? 0 : SIGNS,
+    inputs: UNUSUAL.length - (record === null ? BESIDE_RECORD.length : 0),
   };
 }
 
@@ -40,14 +47,15 @@ export function rulesEvaluated(result: Result | EstimateResult): RulesEvaluated 
  * @param rules counts
  * @returns a sentence, the sum first
  */
-export function rulesWords({ rows, notJudged, devices, assumptions, signs }: RulesEvaluated): string {
+export function rulesWords({ rows, notJudged, devices, assumptions, signs, inputs }: RulesEvaluated): string {
   const whole = (count: number): string => formatNumber(count, 'whole');
   const parts = [
     `${whole(rows)} ${rows === 1 ? 'row' : 'rows'} held against a limit`,
     `${whole(devices)} fitted ${devices === 1 ? 'rating' : 'ratings'}`,
     `${whole(assumptions)} ${assumptions === 1 ? 'assumption' : 'assumptions'} moved to either end`,
     `${whole(signs)} signs of a fault in the record`,
+    `${whole(inputs)} inputs held against what is built`,
   ];
   const open = notJudged === 0 ? 'none was left unjudged' : `${whole(notJudged)} could not be judged`;
-  return `${whole(rows + devices + assumptions + signs)} rules were evaluated: ${parts.join(', ')}; ${open}.`;
+  return `${whole(rows + devices + assumptions + signs + inputs)} rules were evaluated: ${parts.join(', ')}; ${open}.`;
 }

@@ -7,7 +7,7 @@ import { startServer, type TestServer } from '../support/test-server.js';
 import { meterFile, siteFile } from './site-builder.js';
 
 /** Seconds, on a machine that does other things as well. */
-const SOON = { timeout: 30_000, interval: 100 };
+const SOON = { timeout: 90_000, interval: 100 };
 
 for (const { name, available, create } of usualDatabases) {
   describe.runIf(available)(`the example of a new installation, on ${name}`, () => {
@@ -19,7 +19,7 @@ for (const { name, available, create } of usualDatabases) {
       database = await create();
       server = await startServer(database.url, { demo: true });
       await vi.waitFor(async () => expect(await page()).toContain('Proposed:'), SOON);
-    });
+    }, 120_000);
 
     afterAll(async () => {
       await server.close();

@@ -6,6 +6,7 @@ import { assessEstimate, type Outcome } from '#libs/engine/index.js';
 import { blocking, type Finding, findingNumbers, findings } from '#libs/present/findings.js';
 import { putEstimateInWords, putInWords } from '#libs/present/put-in-words.js';
 import { rulesEvaluated, rulesWords } from '#libs/present/rules-evaluated.js';
+import { UNUSUAL_MESSAGES } from '#libs/present/unusual-messages.js';
 import { generatedCase } from '../support/generated-site.js';
 import { MADE_BANK, MADE_PLAIN_BANK, madeOutcome, madeSite } from '../support/outcome.js';
 import { runs } from '../support/soak.js';
@@ -125,14 +126,15 @@ describe('findings', () => {
 describe('the rules that were evaluated', () => {
   it('are counted whether they were triggered or not', () => {
     for (const { result } of outcomes) {
-      const { rows, notJudged, devices, signs } = rulesEvaluated(result);
+      const { rows, notJudged, devices, signs, inputs } = rulesEvaluated(result);
       expect(rows + notJudged).toBe(result.duties.length);
       expect(devices).toBeLessThanOrEqual(result.devices.length);
       expect(signs).toBeGreaterThan(5);
+      expect(inputs).toBe(Object.keys(UNUSUAL_MESSAGES).length);
     }
-    expect(rulesWords({ rows: 12, notJudged: 2, devices: 1, assumptions: 7, signs: 12 })).toBe(
-      '32 rules were evaluated: 12 rows held against a limit, 1 fitted rating, 7 assumptions moved to either end, ' +
-        '12 signs of a fault in the record; 2 could not be judged.',
+    expect(rulesWords({ rows: 12, notJudged: 2, devices: 1, assumptions: 7, signs: 12, inputs: 14 })).toBe(
+      '46 rules were evaluated: 12 rows held against a limit, 1 fitted rating, 7 assumptions moved to either end, ' +
+        '12 signs of a fault in the record, 14 inputs held against what is built; 2 could not be judged.',
     );
   });
 });
