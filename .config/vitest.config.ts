@@ -10,6 +10,10 @@ const withDatabases = ['libs/store/**/*.spec.ts', 'libs/jobs/**/*.spec.ts', 'app
 const alone = ['test/browser/pace.spec.ts'];
 const startPostgres = ['test/support/postgres.ts'];
 
+// Pure functions keep nothing between one test and the next, and a test of the store or over HTTP has a database and a
+// server of its own: their files share what is loaded.
+const shared = { isolate: false };
+
 const project = (name: string, include: string[], timeoutMs: number, more: object = {}) => ({
   extends: true as const,
   test: {
@@ -39,11 +43,11 @@ export default defineConfig({
           'test/support/**/*.spec.ts',
         ],
         20_000,
-        // pure functions keep nothing between one test and the next, so their files may share what is loaded
-        { exclude: withDatabases, isolate: false },
+        { exclude: withDatabases, ...shared },
       ),
-      project('store', withDatabases, 30_000, { globalSetup: startPostgres }),
-      project('whole', ['test/{golden,api,faults,browser}/**/*.spec.ts'], 120_000, {
+      project('store', withDatabases, 30_000, { globalSetup: startPostgres, ...shared }),
+      project('api', ['test/api/**/*.spec.ts'], 120_000, { globalSetup: startPostgres, ...shared }),
+      project('whole', ['test/{golden,faults,browser}/**/*.spec.ts'], 120_000, {
         globalSetup: startPostgres,
         exclude: alone,
       }),

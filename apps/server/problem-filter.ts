@@ -1,15 +1,16 @@
 import { STATUS_CODES } from 'node:http';
 import { type ArgumentsHost, Catch, type ExceptionFilter, HttpException } from '@nestjs/common';
-import type { FastifyReply } from 'fastify';
+import type { FastifyReply, FastifyRequest } from 'fastify';
 import { type ProblemJson, problemJson } from '#libs/contract/error-body.js';
 import { InputProblem, type ProblemCode } from '#libs/engine/index.js';
 import { StaleVersion } from '#libs/store/stale-version.js';
+import { isForPage, refusedPage } from './home/refused-page.js';
 import { QuestionWithOffer } from './records/question-with-offer.js';
 import { RefusedRequest } from './refused-request.js';
 import type { ServerLog } from './server-log.js';
 import { tagOf } from './sites/version-tag.js';
 
-/** Answers every error as application/problem+json; a fault of ours is logged and not told. */
+/** Answers every error as application/problem+json, a page's with a page; a fault of ours is logged and not told. */
 @Catch()
 export class ProblemFilter implements ExceptionFilter {
   readonly #log: ServerLog;
@@ -24,7 +25,12 @@ export class ProblemFilter implements ExceptionFilter {
     if (problem.status >= 500) this.#log.fault(error);
     if (reply.sent || reply.raw.headersSent) return;
     if (problem.versions !== undefined) reply.header('etag', tagOf(problem.versions.current));
-    reply.status(problem.status).type('application/problem+json').send(JSON.stringify(problem));
+    reply.status(problem.status);
+    if (isForPage(host.switchToHttp().getRequest<FastifyRequest>())) {
+      reply.type('text/html; charset=utf-8').send(refusedPage(problem));
+      return;
+    }
+    reply.type('application/problem+json').send(JSON.stringify(problem));
   }
 }
 

@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { readAddress, siteAddress, stationOfPath } from './address.js';
+import { againAddress, readAddress, siteAddress, stationOfPath } from './address.js';
 
 describe('the station of a field', () => {
   it.each([
@@ -31,6 +31,16 @@ describe('an address', () => {
       field: 'bank.stages[2].fuseA',
       figure: null,
     });
+  });
+
+  it('holds a bank against a revision, or against the latest where the number is none', () => {
+    expect(readAddress(againAddress('4197cbe0', 3))).toEqual({ page: 'again', siteId: '4197cbe0', revision: 3 });
+    for (const hash of [
+      againAddress('4197cbe0'),
+      '#/sites/4197cbe0/again?revision=0',
+      '#/sites/4197cbe0/again?revision=x',
+    ])
+      expect(readAddress(hash)).toEqual({ page: 'again', siteId: '4197cbe0', revision: null });
   });
 
   it('that leads nowhere says so, rather than opening something else', () => {

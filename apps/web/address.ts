@@ -9,6 +9,7 @@ export type Address =
   | { page: 'sites' }
   | { page: 'site'; siteId: string; station: Station; field: string | null; figure: string | null }
   | { page: 'survey'; siteId: string }
+  | { page: 'again'; siteId: string; revision: number | null }
   | { page: 'unknown'; asked: string };
 
 /** @param hash as the browser has it */
@@ -18,6 +19,7 @@ export function readAddress(hash: string): Address {
   const [first, siteId, station = 'bank', ...rest] = path.split('/');
   if (first !== 'sites' || siteId === undefined || rest.length > 0) return { page: 'unknown', asked: path };
   if (station === 'survey') return { page: 'survey', siteId };
+  if (station === 'again') return { page: 'again', siteId, revision: revisionIn(search) };
   if (!isStation(station)) return { page: 'unknown', asked: path };
   const asked = new URLSearchParams(search);
   return { page: 'site', siteId, station, field: asked.get('field'), figure: asked.get('figure') };
@@ -27,6 +29,19 @@ export function readAddress(hash: string): Address {
 export function siteAddress(siteId: string, station: Station, part: { field?: string; figure?: string } = {}): string {
   const search = new URLSearchParams(part as Record<string, string>).toString();
   return `#/sites/${siteId}/${station}${search === '' ? '' : `?${search}`}`;
+}
+
+/**
+ * Where a site's bank is judged again.
+ * @param revision held against; absent, the latest one
+ */
+export function againAddress(siteId: string, revision?: number): string {
+  return `#/sites/${siteId}/again${revision === undefined ? '' : `?revision=${revision}`}`;
+}
+
+function revisionIn(search: string): number | null {
+  const text = new URLSearchParams(search).get('revision') ?? '';
+  return /^[1-9]\d{0,8}$/.test(text) ? Number(text) : null;
 }
 
 function isStation(word: string): word is Station {

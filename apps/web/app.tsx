@@ -8,6 +8,8 @@ const SurveySheet = lazy(() =>
   import('./record/survey-sheet.js').then(({ SurveySheet: sheet }) => ({ default: sheet })),
 );
 
+const AgainPage = lazy(() => import('./again/again-page.js').then(({ AgainPage: page }) => ({ default: page })));
+
 /** The page: the list of sites, one site, or a word that nothing is here. */
 export function App() {
   const address = useAddress();
@@ -20,6 +22,12 @@ export function App() {
       return (
         <Suspense>
           <SurveySheet siteId={address.siteId} />
+        </Suspense>
+      );
+    case 'again':
+      return (
+        <Suspense>
+          <AgainPage key={address.siteId} siteId={address.siteId} asked={address.revision} />
         </Suspense>
       );
     case 'unknown':

@@ -34,6 +34,7 @@ export const NOTE_CODES = {
   'unit-read-as-mega': ['columns'],
   'reactive-in-kilowatt': ['columns'],
   'leading-not-recorded': [],
+  'leading-left-out': ['channels'],
   'reactive-sign-taken': ['lagging', 'negative'],
   'reactive-never-leading': [],
   'reactive-unsigned': [],

@@ -51,6 +51,12 @@ const LABELS: Readonly<Record<string, string>> = {
   'devices.cabinetHeatW': 'heat of the cabinet, at most',
   'devices.airFlowM3PerH': 'air for that heat at the allowed rise',
   'devices.responseA': 'response current at the current transformer’s secondary',
+  'money.savingPerYear': 'saving of the calendar months, January first',
+  'money.npv': 'net present value: capital and each year’s net at present value',
+  'money.paybackYears': 'payback: the last month below 0, and what it takes of the next',
+  'money.discountedPaybackYears': 'payback of the present values',
+  'money.irrPct': 'internal rate of return, between two rates next to it',
+  'money.annuityPerYear': 'net present value as an equal amount a year',
   'loads.neutralA': 'neutral current of the single-phase loads’ third harmonics',
 };
 

@@ -31,15 +31,15 @@ interface Judged {
 
 /**
  * The findings of an outcome, gravest first, in four strict levels. What is over a limit, a record that supports no bank and
- * a plan outside what was computed block issue; what is near a limit and every assumption that would turn the verdict has
- * to be accepted, each by itself; notes of the record and rows without a limit are to be noted; the rest informs.
+ * a plan outside what was computed block issue; what is near a limit, every assumption that would turn the verdict and every
+ * one that rests on stale papers has to be accepted, each by itself; notes of the record and rows without a limit are to be noted; the rest informs.
  * @param judged the plan or judgement
  * @returns findings in the order of their levels, each with an id of its own
  */
 export function findings({ result }: Judged): Finding[] {
   const all = [
     ...result.reasons.map(remarkFinding),
-    ...result.assumptions.filter(({ effect }) => effect?.changesVerdict === true).map(turningFinding),
+    ...result.assumptions.flatMap(assumptionFinding),
     ...notJudgedFinding(result.duties),
     ...(result.record?.notes ?? []).map(remarkFinding),
   ];
@@ -106,6 +106,12 @@ function remarkFinding(said: Remark): Finding {
     source: said.source === 'practice' ? 'common practice' : (said.source ?? ''),
     consequence: remarkConsequence(said),
   };
+}
+
+/** An assumption that would turn the verdict is accepted, and so is one that the catalogue wants accepted, stale prices say. */
+function assumptionFinding(assumption: Remark): Finding[] {
+  if (assumption.effect?.changesVerdict === true) return [turningFinding(assumption)];
+  return messageOf(assumption.code)?.level === 'to be accepted' ? [remarkFinding(assumption)] : [];
 }
 
 /** An assumption that would turn the verdict, had it been another value that practice meets. */

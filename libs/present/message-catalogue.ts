@@ -6,6 +6,7 @@ import { MONEY_MESSAGES } from './money-messages.js';
 import { NOTE_MESSAGES } from './note-messages.js';
 import { REASON_MESSAGES } from './reason-messages.js';
 import { RECORD_MESSAGES } from './record-messages.js';
+import { UNUSUAL_MESSAGES } from './unusual-messages.js';
 
 /** One sentence for every code of a remark. */
 export const MESSAGES: Messages = {
@@ -16,4 +17,5 @@ export const MESSAGES: Messages = {
   ...MONEY_MESSAGES,
   ...RECORD_MESSAGES,
   ...ESTIMATE_MESSAGES,
+  ...UNUSUAL_MESSAGES,
 };

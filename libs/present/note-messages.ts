@@ -89,6 +89,10 @@ export const NOTE_MESSAGES: Messages = {
     'The file has no leading kvar; they were taken as none.',
     'Over-correction in the record would not show.',
   ),
+  'leading-left-out': noted(
+    'Leading kvar stand in the file in a form that cannot be read together with the rest, and were left out: {channels}.',
+    'Over-correction in the record would not show. Ask for them in intervals of the same length.',
+  ),
   'reactive-sign-taken': told(
     'Lagging kvar were taken as {lagging}; {negative:value is|values are} negative.',
     'See that the sign is so.',

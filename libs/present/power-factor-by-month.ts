@@ -66,7 +66,12 @@ function beside(value: number | null, target: number): string {
   return value === null ? '–' : formatApart(value, target).value;
 }
 
-function factorAxis(least: number): Chart['y'] {
+/**
+ * The axis of a power factor: from a round value under the least one up to 1.
+ * @param least least value shown
+ * @returns axis with its ticks
+ */
+export function factorAxis(least: number): Chart['y'] {
   const step = niceStep(Math.min(least, 0.98), 1, 4);
   const from = Math.max(0, Math.floor(least / step - 0.05) * step);
   const ticks = [];

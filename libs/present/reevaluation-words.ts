@@ -48,8 +48,9 @@ export const CHANGE_HEADS = ['what', 'before', 'after', 'limit', 'verdict'] as c
 export function changeRows({ changes }: Reevaluation, currency: string): string[][] {
   return changes.map((change) => {
     const unit = change.id.startsWith('money.') ? currency : change.unit;
+    const digits = change.id === 'operation.monthsBelow' ? 'given' : 'computed';
     const value = (of: number | Verdict | null): string =>
-      typeof of === 'string' ? VERDICT_WORDS[of] : formatQuantity(of, unit);
+      typeof of === 'string' ? VERDICT_WORDS[of] : formatQuantity(of, unit, digits);
     const moved = change.verdictBefore !== change.verdictAfter && change.verdictBefore !== null;
     const judged = change.id !== 'duty' ? '–' : verdictWords(change.verdictAfter);
     return [

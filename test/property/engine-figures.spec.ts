@@ -11,6 +11,18 @@ const drives = { name: 'drives', fundamentalA: 200, spectrum: 'six-pulse' as con
 const stage = { count: 4, ratedKvar: 50, ratedV: 480, reactorPct: 7 };
 const ieee = { rules: 'ieee' as const, frequencyHz: 60, bus: { nominalV: 480, highestV: 508 } };
 
+const PAPERS = {
+  currency: 'EUR',
+  tariff: { clauses: [{ name: 'kvarh', kind: 'kvarhBeyondRatio', freeRatio: 0.33, pricePerUnit: 0.005 }] },
+  prices: {
+    perKvar: 40,
+    perStage: 55,
+    maintenancePerYear: 12,
+    switches: [{ kind: 'contactor', perStage: 38, lifeSwitchings: 2000 }],
+  },
+} satisfies Partial<Site>;
+const DEAR = { prices: { ...PAPERS.prices, perKvar: 9000 } } satisfies Partial<Site>;
+
 const SITES: [string, Partial<Site>][] = [
   ['one plain group at the bus', { bank: { stages: [{ ...stage, reactorPct: 0 }] } }],
   [
@@ -67,6 +79,10 @@ const SITES: [string, Partial<Site>][] = [
   ],
   ['export held against the target', { target: { onExport: 'absolute' }, bank: { stages: [stage] } }],
   ['no delay before a stage may come back', { control: { reconnectDelayS: 0 }, bank: { stages: [stage] } }],
+  ['a priced bank', { ...PAPERS, bank: { stages: [stage] } }],
+  ['a priced bank, no discount', { ...PAPERS, finance: { discountPct: 0 }, bank: { stages: [stage] } }],
+  ['a bank that is never paid back', { ...PAPERS, ...DEAR, bank: { stages: [stage] } }],
+  ['bills without prices', { tariff: PAPERS.tariff, bank: { stages: [stage] } }],
   ['a single stage', { bank: { stages: [{ ...stage, count: 1 }] } }],
 ];
 
@@ -126,6 +142,21 @@ describe.each(OUTCOMES)('figures of %s', (_, outcome) => {
       expect(value, id).toBe(entry);
     }
     expect(met).toBeGreaterThan(3);
+  });
+});
+
+describe('the figures of money', () => {
+  const ids = (parts: Partial<Site>) =>
+    assessed({ bank: { stages: [stage] }, ...parts }).result.figures.flatMap(({ id }) =>
+      id.startsWith('money.') ? [id] : [],
+    );
+
+  it('stand with tariff and prices, and none of a payback or a rate that there is not', () => {
+    const worth = ['money.savingPerYear', 'money.npv', 'money.paybackYears', 'money.discountedPaybackYears'];
+    expect(ids(PAPERS)).toEqual([...worth, 'money.irrPct', 'money.annuityPerYear']);
+    expect(ids({ ...PAPERS, ...DEAR })).not.toContain('money.paybackYears');
+    expect(ids({ tariff: PAPERS.tariff })).toEqual(['money.savingPerYear']);
+    expect(ids({})).toEqual([]);
   });
 });
 

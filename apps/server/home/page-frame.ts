@@ -29,7 +29,7 @@ ${refreshS === undefined ? null : html`<meta http-equiv="refresh" content="${ref
 ${script === undefined ? null : html`<script type="module" src="${script}"></script>`}
 </head>
 <body>
-<header><p><strong>Varwright</strong> <span class="soft">plans capacitor banks for power-factor correction</span></p><div class="line"></div></header>
+<header><p><strong><a href="/">Varwright</a></strong> <span class="soft">plans capacitor banks for power-factor correction</span></p><div class="line"></div></header>
 <main>
 ${main}
 </main>

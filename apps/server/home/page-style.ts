@@ -6,13 +6,30 @@ export const PAGE_STYLE = `
 @media (prefers-color-scheme: dark) { :root {
   --sheet: #10181e; --ink: #e8eef0; --soft: #a3b1b9; --hair: #3b4952; --bank: #74b8f0;
   --watch: #f2cc55; --avoid: #ff7c98; --avoid-fill: #c9316a; --on-avoid: #ffffff; } }
+@font-face { font-family: "Sofia Sans Semi Condensed"; font-weight: 400; font-display: swap;
+  src: url("/page/sofia-400.woff2") format("woff2"); }
+@font-face { font-family: "Sofia Sans Semi Condensed"; font-weight: 600; font-display: swap;
+  src: url("/page/sofia-600.woff2") format("woff2"); }
 * { box-sizing: border-box; }
 body { margin: 0; background: var(--sheet); color: var(--ink);
   font: 15px/21px "Sofia Sans Semi Condensed", system-ui, sans-serif; }
 header, main, footer { max-width: 1016px; margin: 0 auto; padding: 0 32px; }
 header { padding-top: 16px; }
 header p { margin: 0 0 12px; font-size: 16px; }
-header strong { font-weight: 600; }
+header strong, header strong a { font-weight: 600; font-size: 18px; text-decoration: none; }
+h1, strong, b { font-weight: 600; }
+input, select, button { font: inherit; color: inherit; }
+input:not([type=checkbox], [type=file], [type=hidden]), select { display: block; width: 320px; max-width: 100%; min-height: 34px;
+  padding: 3px 0 4px; font-weight: 600; background: none; border: 0; border-bottom: 1.5px solid var(--ink); border-radius: 0; }
+select { text-overflow: ellipsis; }
+input[type=file] { max-width: 100%; padding: 4px 0; }
+button, input::file-selector-button { font: inherit; font-weight: 600; color: inherit; background: none; cursor: pointer;
+  border: 1.5px solid var(--ink); border-radius: 0; min-height: 34px; padding: 5px 14px; }
+button.main, form[data-act] button:not(.quiet) { background: var(--ink); color: var(--sheet); }
+input::file-selector-button { margin-right: 12px; }
+input:focus-visible, select:focus-visible, button:focus-visible { outline: 3px solid var(--ink); outline-offset: 3px; }
+td form button { min-height: 28px; padding: 2px 10px; }
+.fields input:not([type=checkbox]), td select, .fields select { width: 100%; min-width: 0; }
 .line { height: 5px; background: var(--ink); }
 h1 { font-size: 25px; line-height: 30px; font-weight: 600; margin: 24px 0 8px; overflow-wrap: anywhere; }
 h2 { font-size: 16px; line-height: 20px; font-weight: 600; margin: 0; padding-top: 12px; }
@@ -57,13 +74,15 @@ textarea { font: inherit; color: inherit; background: none; border: 0; border-bo
 input[type=checkbox] { width: 24px; height: 24px; min-height: 24px; vertical-align: middle; accent-color: var(--ink); }
 textarea:focus-visible, summary:focus-visible { outline: 3px solid var(--ink); outline-offset: 3px; }
 .fields { display: grid; grid-template-columns: repeat(auto-fit, minmax(90px, 1fr)); gap: 0 16px; align-items: end; }
-fieldset { border: 0; border-top: 1px solid var(--hair); margin: 12px 0; padding: 8px 0; }
+fieldset { min-width: 0; border: 0; border-top: 1px solid var(--hair); margin: 12px 0; padding: 8px 0; }
 legend { padding: 0 8px 0 0; font-weight: 600; }
 .level { font-size: 13px; font-weight: 600; padding: 1px 6px; border: 2px solid var(--ink); }
 .level.blocks { background: var(--ink); color: var(--sheet); }
 .drop { border: 1.5px dashed var(--ink); padding: 24px; }
 .drop.over { border-style: solid; }
 [role=alert]:empty, [role=status]:empty { display: none; }
+.refusal { display: block; color: var(--avoid); font-size: 13px; line-height: 18px; padding-top: 4px; }
+[aria-invalid=true] { border-color: var(--avoid) !important; }
 [role=alert] { color: var(--avoid); font-weight: 600; }
 summary { cursor: pointer; min-height: 24px; padding: 4px 0; }
 .wide { max-width: none; }
@@ -71,6 +90,8 @@ ol { padding-left: 32px; }
 li { overflow-wrap: anywhere; }
 .wide td, .wide th { text-align: left; overflow-wrap: anywhere; vertical-align: top; }
 footer { padding-bottom: 32px; }
-@media (max-width: 719px) { header, main, footer { padding-left: 14px; padding-right: 14px; } h1 { font-size: 21px; line-height: 26px; } }
+details { margin: 12px 0; }
+code { overflow-wrap: anywhere; }
+@media (max-width: 719px) { button { min-height: 40px; } input:not([type=checkbox], [type=hidden]), select { min-height: 40px; } header, main, footer { padding-left: 14px; padding-right: 14px; } h1 { font-size: 21px; line-height: 26px; } }
 @media print { .links { display: none; } }
 `;

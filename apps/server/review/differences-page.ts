@@ -7,6 +7,8 @@ import type { Differences } from './differences.js';
 
 /** More rows than this are read by a program: the API gives them all. */
 const MOST_ROWS = 400;
+/** More rows than this are folded away until somebody wants them. */
+const OPEN_ROWS = 40;
 
 /** Two revisions side by side: only the fields that differ. */
 export function differencesPage(before: Revision, after: Revision, found: Differences): string {
@@ -30,6 +32,7 @@ function part(heading: string, fields: readonly FieldDifference[], [one, other]:
         html`<tr><th scope="row">${path}</th><td>${fieldWords(before)}</td><td>${fieldWords(after)}</td></tr>`,
     );
   const rest = fields.length > MOST_ROWS ? html`<p>${fields.length - MOST_ROWS} more stand in the JSON.</p>` : null;
-  return html`<section><h2>${heading}: ${said}</h2>
-<table class="wide"><thead><tr><th scope="col">field</th><th scope="col">${one}</th><th scope="col">${other}</th></tr></thead><tbody>${rows}</tbody></table>${rest}</section>`;
+  const table = html`<table class="wide"><thead><tr><th scope="col">field</th><th scope="col">${one}</th><th scope="col">${other}</th></tr></thead><tbody>${rows}</tbody></table>${rest}`;
+  const folded = fields.length > OPEN_ROWS ? html`<details><summary>Show them</summary>${table}</details>` : table;
+  return html`<section><h2>${heading}: ${said}</h2>${folded}</section>`;
 }

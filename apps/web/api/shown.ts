@@ -1,6 +1,6 @@
 import type { ProblemJson } from '#libs/contract/error-body.js';
 import type { MeterMap } from '#libs/contract/meter-map.js';
-import type { EstimateResult, RecordSummary, Remark, Result, Verdict } from '#libs/engine/index.js';
+import type { EstimateResult, RecordSummary, Reevaluation, Remark, Result, Verdict } from '#libs/engine/index.js';
 import type { QualityStated } from '#libs/present/quality-words.js';
 import type { ReviewState } from '#libs/review/review.js';
 
@@ -64,6 +64,14 @@ export interface RevisionShown extends RevisionHeadShown {
   rival: { name: string; verdict: Verdict; levelsOver: number; levelsAll: number } | null;
   inputs: { site: SiteDocument };
   result: Result | EstimateResult;
+}
+
+/** A site's bank as it stands now, beside what a revision found. */
+export interface ReevaluationShown {
+  revision: RevisionHeadShown;
+  reevaluation: Reevaluation;
+  /** the bank judged as it measures */
+  result: Result;
 }
 
 /** Where the review of a revision stands, as much of it as the page tells. */

@@ -3,7 +3,7 @@ import { type PlotBox, textWidth } from './plot-box.js';
 
 type Of<K extends Mark['kind']> = Extract<Mark, { kind: K }>;
 type Point = Extract<Mark, { kind: 'ring' | 'disc' }>;
-const BANK_DISCS = new Set(['powerFactorByMonth', 'impedanceOverOrder', 'billsByMonth']);
+const BANK_DISCS = new Set(['powerFactorByMonth', 'factorSince', 'impedanceOverOrder', 'billsByMonth']);
 
 /** Everything set on a chart beside its series, labels clear of each other. */
 export function ChartMarks({ chart, box }: { chart: Chart; box: PlotBox }) {

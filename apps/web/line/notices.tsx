@@ -29,16 +29,19 @@ export function Notices() {
         </p>
       ))}
       {problems.length === general.length ? null : (
-        <p className="notice" role="alert">
-          Refused at{' '}
-          {[...new Set(problems.flatMap(({ path }) => path ?? []))].map((path, at) => (
-            <span key={path}>
-              {at === 0 ? '' : ', '}
-              <a href={siteAddress(desk.siteId, stationOfPath(path), { field: path })}>{path}</a>
-            </span>
-          ))}
-          . The figures below are those from before.
-        </p>
+        <div className="notice" role="alert">
+          <p>Refused; the figures below are those from before.</p>
+          <ul>
+            {problems.map(({ path, expected, found }) =>
+              path === undefined ? null : (
+                <li key={`${path} ${expected}`}>
+                  <a href={siteAddress(desk.siteId, stationOfPath(path), { field: path })}>{path}</a>{' '}
+                  {`needs ${expected}; found ${found}.`}
+                </li>
+              ),
+            )}
+          </ul>
+        </div>
       )}
       {Object.keys(typed).length === 0 ? null : (
         <p className="notice">A field is not readable yet; the figures below are those from before it.</p>

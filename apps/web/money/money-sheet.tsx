@@ -67,9 +67,14 @@ function Figures({ money, papers }: { money: Money; papers: MoneyPapers }) {
       </p>
       <PicksTable money={money} papers={papers} />
       <div className="split halves">
-        <Plot chart={billsByMonth(money.bills, papers)} height={250} />
+        <Plot chart={billsByMonth(money.bills, papers)} height={250} working={['money.savingPerYear']} />
         {isPriced(money) ? (
-          <Plot chart={cashFlowFigure(money, papers)} height={250} styles={{ after: 'picked' }} />
+          <Plot
+            chart={cashFlowFigure(money, papers)}
+            height={250}
+            styles={{ after: 'picked' }}
+            working={['money.npv', 'money.discountedPaybackYears', 'money.annuityPerYear']}
+          />
         ) : (
           <section className="section">
             <p className="caption">{priceBookWords(papers)}</p>
@@ -86,13 +91,19 @@ function keyFigures(money: PricedMoney, currency: string) {
   const { capital, npv, paybackYears } = money;
   return [
     { value: capital.total, unit: currency, under: 'to build', digits: 'whole' as const },
-    { value: npv, unit: currency, under: 'net present value', digits: 'whole' as const },
+    { value: npv, unit: currency, under: 'net present value', digits: 'whole' as const, id: 'money.npv' },
     {
       value: paybackYears,
       unit: 'years',
       under: paybackYears === null ? 'no payback' : `payback, ${formatPayback(paybackYears)}`,
+      ...(paybackYears === null ? {} : { id: 'money.paybackYears' }),
     },
-    { value: money.irrPct, unit: '%', under: 'internal rate a year' },
+    {
+      value: money.irrPct,
+      unit: '%',
+      under: 'internal rate a year',
+      ...(money.irrPct === null ? {} : { id: 'money.irrPct' }),
+    },
   ];
 }
 

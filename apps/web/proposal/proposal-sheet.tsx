@@ -1,6 +1,7 @@
 import { formatQuantity, inShownMark } from '#libs/present/format-number.js';
 import { STATE_WORDS } from '#libs/present/review-words.js';
 import { NO_PERMISSION } from '#libs/present/verdict-words.js';
+import { againAddress } from '../address.js';
 import type { RevisionHeadShown, RevisionShown } from '../api/shown.js';
 import { isChanged, staleFrom } from '../desk/desk-state.js';
 import { useDesk } from '../desk/use-desk.js';
@@ -92,6 +93,9 @@ function KeptPaper({ kept }: { kept: RevisionShown }) {
       <section className="section" aria-labelledby="papers">
         <h2 id="papers">Every revision is kept</h2>
         <Revisions revisions={revisions} />
+        <p className="row gap">
+          <a href={againAddress(kept.siteId)}>Judge the bank again, beside a revision</a>
+        </p>
       </section>
     </>
   );
@@ -161,6 +165,11 @@ function Changes({ revisions }: { revisions: readonly RevisionHeadShown[] }) {
           </p>
         </div>
       </div>
+      <p className="row gap">
+        <a href={`/sites/${now.siteId}/revisions/${before.revision}/differences/${now.revision}`}>
+          Field by field, inputs and results
+        </a>
+      </p>
     </section>
   );
 }

@@ -2,7 +2,7 @@ import { useCallback, useEffect, useState } from 'react';
 import { inShownMark } from '#libs/present/format-number.js';
 import { siteAddress } from '../address.js';
 import { ask, NoConnection, Refused } from '../api/ask.js';
-import type { SiteListed, SiteShown } from '../api/shown.js';
+import type { RecordShown, SiteListed, SiteShown } from '../api/shown.js';
 import { saveText } from '../draw/save-files.js';
 import { VerdictWords } from '../draw/verdict-mark.js';
 import { Head } from '../line/head.js';
@@ -98,13 +98,15 @@ function SiteRow({ site, onChange, onRemove }: { site: SiteListed; onChange: () 
   /** Does it, and says where it could not be done. */
   const said = (work: () => Promise<void>) => () => {
     setFailure('');
-    work().catch((error) => setFailure(error instanceof NoConnection ? 'Not done: no connection.' : String(error)));
+    work().catch((error) =>
+      setFailure(error instanceof NoConnection ? 'Not done: no connection.' : `Not done: ${(error as Error).message}`),
+    );
   };
   const duplicate = said(async () => {
     const { site: document } = (await ask<SiteShown>(`/api/sites/${site.id}`)).body;
     const name = document.name.replace(/ \(example\)$/, '');
-    await ask('/api/sites', { method: 'POST', json: { ...document, name: `${name}, copy` } });
-    onChange();
+    const made = await ask<SiteShown>('/api/sites', { method: 'POST', json: { ...document, name: `${name}, copy` } });
+    await copyRecord(site.id, made.body.id).finally(onChange);
   });
   const exportFile = said(async () => {
     const { site: document } = (await ask<SiteShown>(`/api/sites/${site.id}`)).body;
@@ -138,6 +140,18 @@ function SiteRow({ site, onChange, onRemove }: { site: SiteListed; onChange: () 
       </p>
     </li>
   );
+}
+
+/** The latest record of a site goes with its copy, column for column, so that its hash stays. */
+async function copyRecord(fromId: string, toId: string): Promise<void> {
+  const { records } = (await ask<{ records: RecordShown[] }>(`/api/sites/${fromId}/records`)).body;
+  const [latest] = records;
+  if (latest === undefined) return;
+  const file = await fetch(`/api/sites/${fromId}/records/${latest.id}/export?form=csv`);
+  if (!file.ok) throw new Error(`The record was not copied: the server answered ${file.status}.`);
+  const name = encodeURIComponent(latest.file.name ?? 'record.csv');
+  const headers = { 'content-type': 'application/octet-stream' };
+  await ask(`/api/sites/${toId}/records?name=${name}`, { method: 'POST', body: await file.blob(), headers });
 }
 
 function plainFileName(name: string): string {

@@ -13,6 +13,7 @@ import { type BankChoice, judgeWhole, rivalOf } from './judged-bank.js';
 import { judgementReasons, reconnectionReasons } from './judgement-reasons.js';
 import { dutyFigures, neutralFigure, supplyFigures } from './network-figures.js';
 import { copyNote, pointAssumption, reasonsBeside, verdictBeside } from './reasons-beside.js';
+import { unusualSite } from './unusual-inputs.js';
 
 /** A bank for an estimated load, and what led to it. */
 export interface EstimateChoice extends BankChoice {
@@ -61,6 +62,7 @@ export function estimateOutcome(
       ...judgementReasons(study, bank, judgement),
       ...estimateReasons(study, summary.effectiveKvar),
       ...choice.reasons,
+      ...unusualSite(study.site, bank),
       ...reconnectionReasons(study, bank, control, judgement),
       ...reasonsBeside(study, bank, { control, duties: judgement.duties }, beside),
     ],

@@ -8,12 +8,14 @@ import { deviceFigures } from './device-figures.js';
 import { figures } from './figures.js';
 import { basisOf, overallVerdict } from './judge-basis.js';
 import { type BankChoice, judgeWhole, rivalOf } from './judged-bank.js';
+import { moneyFigures } from './money-figures.js';
 import type { Outcome } from './outcome.js';
 import { reasons } from './reasons.js';
 import { copyNote, pointAssumption, reasonsBeside, verdictBeside } from './reasons-beside.js';
 import type { Result } from './result.js';
 import { rangeOf } from './turned-range.js';
 import { type Operated, operate, type Study } from './study.js';
+import { unusualRecord, unusualSite } from './unusual-inputs.js';
 import type { WaysWeighed } from './weighed-bank.js';
 
 /** What is said of a bank besides what its own figures say. */
@@ -76,6 +78,8 @@ export function outcomeOf(kind: Outcome['kind'], study: Study, choice: Choice): 
       ...said.reasons,
       ...range.reasons,
       ...reasons(study, bank, operated, judgement),
+      ...unusualSite(study.site, bank),
+      ...unusualRecord(study, bank),
       ...reasonsBeside(study, bank, { control, duties: judgement.duties }, beside),
     ],
     assumptions: [
@@ -90,6 +94,7 @@ export function outcomeOf(kind: Outcome['kind'], study: Study, choice: Choice): 
   result.figures = [
     ...figures(study, bank, operated, result),
     ...(equipment === null ? [] : deviceFigures(study, bank, control, equipment)),
+    ...(result.money === null ? [] : moneyFigures(result.money, study.site.papers)),
   ];
   return {
     kind,

@@ -22,6 +22,8 @@ export interface ChannelFile {
   notes: readonly Remark[];
   /** values that stand in the file, of whatever channel */
   rowsRead: number;
+  /** channels of leading kvar that cannot be read with these */
+  leadingElsewhere?: readonly string[];
 }
 
 /**
@@ -85,7 +87,7 @@ function joined(file: ChannelFile, options: ReadOptions, keep: Keep): { result: 
     ...(duplicates > 0 ? [note('duplicates-dropped', { rows: duplicates })] : []),
     ...(conflicts > 0 ? [note('conflicting-rows-settled', { rows: conflicts, kept: keep })] : []),
     ...(built.withoutValue > 0 ? [note('intervals-without-value', { intervals: built.withoutValue })] : []),
-    ...reactiveNotes(sources, built.negativeReactive),
+    ...reactiveNotes(sources, built.negativeReactive, file.leadingElsewhere ?? []),
   ];
   const firstS = rows.utcS[0] ?? 0;
   const lastS = rows.utcS[rows.utcS.length - 1] ?? 0;
@@ -194,11 +196,18 @@ function addedNotes(series: readonly Series[]): Remark[] {
     .map(([quantity, list]) => note('channels-added', { channels: list.sort().join(', ').slice(0, 300), quantity }));
 }
 
-function reactiveNotes(sources: readonly QuantitySource[], negative: number): Remark[] {
+function reactiveNotes(
+  sources: readonly QuantitySource[],
+  negative: number,
+  leadingElsewhere: readonly string[],
+): Remark[] {
   const has = (quantity: Quantity) => sources.some((source) => source.quantity === quantity);
   const exported = has('exported') ? [note('export-subtracted', { column: 'exported' })] : [];
   if (has('reactive') && negative > 0)
     return [note('reactive-sign-taken', { lagging: 'positive', negative }), ...exported];
-  if (has('reactive') && !has('leading')) return [note('reactive-never-leading', {}), ...exported];
-  return has('leading') ? exported : [note('leading-not-recorded', {}), ...exported];
+  if (has('leading')) return exported;
+  if (leadingElsewhere.length > 0) {
+    return [note('leading-left-out', { channels: leadingElsewhere.join(', ').slice(0, 300) }), ...exported];
+  }
+  return [note(has('reactive') ? 'reactive-never-leading' : 'leading-not-recorded', {}), ...exported];
 }

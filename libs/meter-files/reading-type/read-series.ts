@@ -6,7 +6,7 @@ import { readMeters } from '../channels/read-meters.js';
 import type { MeterReading, ReadOptions } from '../meter-format.js';
 import { note } from '../note.js';
 import { shownReading } from '../record/reading-shown.js';
-import { type ChosenSeries, chooseSeries, type Series } from './choose-series.js';
+import { type ChosenSeries, chooseSeries, leadingLeftOut, type Series } from './choose-series.js';
 import { TOTAL_FLOWS } from './flow-schemes.js';
 import { describeType, formOf, isSample } from './reading-type.js';
 import { channelOf } from './series-moments.js';
@@ -51,7 +51,8 @@ function readMeter(file: SeriesFile, meter: SeriesMeter, options: ReadOptions): 
   const rowsRead = meter.series.reduce((sum, { readings }) => sum + readings.count, 0);
   const notes = [...file.notes, ...seriesNotes(chosen, meter.series), ...markNotes(file, chosen, said)];
   if (multiplier !== 1) notes.push(note('values-multiplied', { multiplier }));
-  return readChannels({ format: file.format, channels, notes, rowsRead }, options);
+  const leadingElsewhere = leadingLeftOut(chosen, meter.series).map(describeSeries);
+  return readChannels({ format: file.format, channels, notes, rowsRead, leadingElsewhere }, options);
 }
 
 /** Whether a register's readings come with an interval and could stand at its beginning or its end. */
