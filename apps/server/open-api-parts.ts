@@ -1,27 +1,17 @@
-/** What the routes' own declarations cannot say, by method and path; merged into the description. */
-type Part = { parameters?: object[]; requestBody?: object; responses?: Record<string, object> };
-
-const text = { type: 'string' };
-const whole = { type: 'integer' };
-const moment = { type: 'string', format: 'date-time' };
-const open = { type: 'object', additionalProperties: true };
-const listOf = (items: object) => ({ type: 'array', items });
-const schemaOf = (name: string) => ({ $ref: `#/components/schemas/${name}` });
-const objectOf = (properties: Record<string, object>) => ({
-  type: 'object',
-  required: Object.keys(properties),
-  properties,
-});
-const nullable = (schema: object) => ({ ...schema, nullable: true });
-const json = (description: string, schema: object) => ({ description, content: { 'application/json': { schema } } });
-const query = (name: string, description: string, schema: object) => ({ in: 'query', name, description, schema });
-const header = (name: string, description: string, required: boolean) => ({
-  in: 'header',
-  name,
-  description,
-  required,
-  schema: text,
-});
+import {
+  header,
+  json,
+  listOf,
+  moment,
+  nullable,
+  objectOf,
+  open,
+  type Part,
+  query,
+  schemaOf,
+  text,
+  whole,
+} from './open-api-answers.js';
 
 const siteHead = {
   id: text,

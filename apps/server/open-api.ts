@@ -1,10 +1,13 @@
 import type { INestApplication } from '@nestjs/common';
 import type { OpenAPIObject } from '@nestjs/swagger';
 import { routesOf } from './declared-routes.js';
+import { EXPORT_PARTS } from './exports/exports-api.js';
 import { ANSWER_SCHEMAS, OPEN_API_PARTS } from './open-api-parts.js';
+import { PEOPLE_PARTS, PEOPLE_SCHEMAS } from './people/people-api.js';
+import { REEVALUATION_PARTS } from './reevaluation/reevaluation-api.js';
 import { REVIEW_PARTS, REVIEW_SCHEMAS } from './review/review-api.js';
 
-const PARTS = { ...OPEN_API_PARTS, ...REVIEW_PARTS };
+const PARTS = { ...OPEN_API_PARTS, ...REVIEW_PARTS, ...EXPORT_PARTS, ...PEOPLE_PARTS, ...REEVALUATION_PARTS };
 
 type Operation = { summary?: string; parameters?: object[]; requestBody?: object; responses: Record<string, object> };
 
@@ -38,7 +41,7 @@ async function describeRoutes(app: INestApplication): Promise<OpenAPIObject> {
   const document = SwaggerModule.createDocument(app, about);
   document.components = {
     ...document.components,
-    schemas: { ...document.components?.schemas, ...ANSWER_SCHEMAS, ...REVIEW_SCHEMAS },
+    schemas: { ...document.components?.schemas, ...ANSWER_SCHEMAS, ...REVIEW_SCHEMAS, ...PEOPLE_SCHEMAS },
   };
   for (const { method, path, declared } of routesOf(app)) {
     const template = path.replace(/:(\w+)/g, '{$1}');

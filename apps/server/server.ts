@@ -13,6 +13,7 @@ import { type Registered, refuseUndeclared, routesOf } from './declared-routes.j
 import { DemoController } from './demo/demo-controller.js';
 import { loadDemo } from './demo/load-demo.js';
 import { ExportsController } from './exports/exports-controller.js';
+import { FiguresController } from './exports/figures-controller.js';
 import { SiteImportsController } from './exports/site-imports-controller.js';
 import { HealthController } from './health/health-controller.js';
 import { HomeController } from './home/home-controller.js';
@@ -24,13 +25,13 @@ import { foreignCheck } from './local-requests.js';
 import { Once, replay } from './once/once.js';
 import { OpenApi } from './open-api.js';
 import { OpenApiController } from './open-api-controller.js';
-import type { Confirm } from './people/confirm.js';
 import { PageController } from './page/page-controller.js';
 import { PageFiles } from './page/page-files.js';
-import { AccountPageController } from './people/account-page-controller.js';
 import { PapersController } from './papers/papers-controller.js';
+import { AccountPageController } from './people/account-page-controller.js';
 import { Accounts, type Reach } from './people/accounts.js';
 import { Admission } from './people/admission.js';
+import type { Confirm } from './people/confirm.js';
 import { Keys } from './people/keys.js';
 import { KeysController } from './people/keys-controller.js';
 import { type HashCost, PRESENT_COST } from './people/password-hash.js';
@@ -48,8 +49,8 @@ import { RecordImport } from './records/record-import.js';
 import { RecordsController } from './records/records-controller.js';
 import { Spool } from './records/spool.js';
 import { UploadIntake } from './records/upload-intake.js';
-import { refuseOtherBodies, takesFile } from './request-bodies.js';
 import { ReevaluationController } from './reevaluation/reevaluation-controller.js';
+import { refuseOtherBodies, takesFile } from './request-bodies.js';
 import { DifferencesController } from './review/differences-controller.js';
 import { ReviewController } from './review/review-controller.js';
 import { ReviewPageController } from './review/review-page-controller.js';
@@ -87,6 +88,7 @@ const CONTROLLERS: ServerParts['controllers'] = [
   KeptMapsController,
   PapersController,
   ExportsController,
+  FiguresController,
   SiteImportsController,
   JobsController,
   SessionController,

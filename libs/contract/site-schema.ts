@@ -64,6 +64,7 @@ const control = settings.extend({
 });
 
 const order = (pct: Range) => z.strictObject({ orderH: plain({ above: 1, max: 50 }), pct: quantity('pct', pct) });
+const injectedOrder = order({ min: 0, max: 1000 }).extend({ angleDeg: plain({ min: -360, max: 360 }).optional() });
 
 const loads = z.strictObject({
   motorSharePct: quantity('motorSharePct', PERCENT).optional(),
@@ -73,7 +74,7 @@ const loads = z.strictObject({
       bus: label().optional(),
       fundamentalA: quantity('fundamentalA', NOT_NEGATIVE),
       spectrum: z.enum(SPECTRUM_NAMES).optional(),
-      orders: listOf(order({ min: 0, max: 1000 }), 1, 200).optional(),
+      orders: listOf(injectedOrder, 1, 200).optional(),
     }),
     0,
     200,

@@ -224,6 +224,28 @@ const refused: [why: string, json: unknown, path: string, code: string][] = [
   ],
 ];
 
+describe('a source', () => {
+  const current = (more: Record<string, unknown>) => ({
+    loads: { distorting: [{ name: 'a', fundamentalA: 100, orders: [{ orderH: 5, pct: 30, ...more }] }] },
+  });
+
+  it('may give the angle of an order', () => {
+    const { loads } = readSite(siteWith(mva, current({ angleDeg: -120 })));
+    expect(loads?.distorting?.[0]?.orders).toEqual([{ orderH: 5, pct: 30, angleDeg: -120 }]);
+  });
+
+  it('has no angle beyond a turn, and a background has none', () => {
+    const path = 'loads.distorting[0].orders[0].angleDeg';
+    expect(problemsOf(siteWith(mva, current({ angleDeg: 361 })))).toEqual([
+      expect.objectContaining({ path, code: 'out-of-range' }),
+    ]);
+    const background = { loads: { backgroundPct: [{ orderH: 5, pct: 1, angleDeg: 0 }] } };
+    expect(problemsOf(siteWith(mva, background))).toEqual([
+      expect.objectContaining({ path: 'loads.backgroundPct[0].angleDeg', code: 'unknown-key' }),
+    ]);
+  });
+});
+
 describe('a site', () => {
   it.each(refused)('with %s is refused at its path', (_why, json, path, code) => {
     expect(problemsOf(json)).toEqual([expect.objectContaining({ path, code })]);

@@ -115,6 +115,10 @@ export const ASSUMPTION_MESSAGES: Messages = {
     'The voltage at the bus is held against the limits, and the bus is taken for the point of coupling.',
     'Ask who owns the point of coupling, and where it lies.',
   ),
+  'loads.angles': assumed(
+    'The currents of {count} loads with angles add as phasors at every load and level; what cancels does so always.',
+    'Leave the angles out where the loads do not run together, or their angles move with the load.',
+  ),
   'limits.tighterCopy': assumed(
     'Copies of {edition} differ at order {orderH}, {usedPct} and {otherPct}: the tighter is used.',
     'Read the standard itself.',

@@ -4,6 +4,7 @@ import { parse } from 'csv-parse/sync';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { canonicalJson } from '#libs/contract/canonical-json.js';
 import { readWorkbookRows } from '#libs/meter-files/xlsx/read-workbook-rows.js';
+import { dataSourceFor, readAddress } from '#libs/store/data-source.js';
 import { databases, type TestDatabase } from '../support/databases.js';
 import { pngFile } from '../support/made-picture.js';
 import { type Answer, startServer, type TestServer } from '../support/test-server.js';
@@ -88,6 +89,38 @@ describe('exports over HTTP', () => {
     expect(cells.slice(1).map(([, , cell]) => Number(cell))).toEqual(
       result.figures.map((figure: { value: number }) => figure.value),
     );
+  });
+
+  it('give the figures as drawings of the revision, the same at every time of asking', async () => {
+    const { status, body } = await server.ask('GET', `/api/sites/${id}/revisions/1/figures`);
+    expect(status).toBe(200);
+    const figures = body.figures as { name: string; svg: string }[];
+    expect(figures.map(({ name }) => name)).toEqual(
+      expect.arrayContaining(['single-line', 'duration-curve', 'impedance']),
+    );
+    for (const { svg } of figures)
+      expect([svg.startsWith('<svg '), svg.includes('<title'), svg.trim().endsWith('</svg>')]).toEqual([
+        true,
+        true,
+        true,
+      ]);
+    expect(figures[0]!.svg).toContain('&amp; Söhne');
+    expect((await server.ask('GET', `/api/sites/${id}/revisions/1/figures`)).body).toEqual(body);
+  });
+
+  it('draw no figures of a result that this engine would not give', async () => {
+    const { id: other } = (await server.ask('POST', '/api/sites', siteFile({ name: 'Another engine’s works' }))).body;
+    await server.upload(other, meterFile(9));
+    await judged(other);
+    const raw = await dataSourceFor(readAddress(database.url)).initialize();
+    await raw.query(
+      `UPDATE revision SET result = REPLACE(result, '"control":{', '"control":{"old":1,') WHERE "siteId" = ?`,
+      [other],
+    );
+    await raw.destroy();
+    const { status, body } = await server.ask('GET', `/api/sites/${other}/revisions/1/figures`);
+    expect([status, body.code]).toEqual([409, 'conflict']);
+    expect(body.detail).toContain('compute the revision again');
   });
 
   it('let no spreadsheet run a name', async () => {

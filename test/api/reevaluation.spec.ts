@@ -1,5 +1,6 @@
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { databases, type TestDatabase } from '../support/databases.js';
+import { squeezed, textOf } from '../support/pdf-text.js';
 import { startServer, type TestServer } from '../support/test-server.js';
 import { meterFile, siteFile } from './site-builder.js';
 
@@ -35,6 +36,15 @@ describe('a bank judged again over HTTP', () => {
     expect(body.revision).toMatchObject({ revision: 1 });
     expect(body.reevaluation.inputs).toEqual([{ path: 'bank.stages[0].count', before: 4, after: 2 }]);
     expect(body.result.verdict).toBe(body.reevaluation.verdict.after);
+    const paper = () => server.ask('GET', `${site}/revisions/1/reevaluation/proposal.pdf`);
+    const { status, body: pdf } = await paper();
+    expect(status).toBe(200);
+    const text = textOf(pdf);
+    expect(text).toContain('draft, not reviewed');
+    expect(text).toContain('Judged again');
+    for (const sentence of [...body.tonight, ...body.since]) expect(squeezed(text)).toContain(squeezed(sentence));
+    expect(squeezed(text)).toContain(squeezed(`Judged again beside ${body.revision.number}, revision 1.`));
+    expect(Buffer.compare((await paper()).body, pdf)).toBe(0);
     expect((await server.ask('GET', `${site}/revisions`)).body.revisions).toHaveLength(1);
   });
 

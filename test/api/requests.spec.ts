@@ -141,4 +141,28 @@ describe('the description of the API', () => {
     await server.close();
     await database.drop();
   });
+
+  it('holds every route of the router and none that it does not serve, and says what each of the API answers', async () => {
+    const database = await databases[0]!.create();
+    const server = await startServer(database.url);
+    const { paths } = (await server.ask('GET', '/api/openapi.json')).body as {
+      paths: Record<string, Record<string, { responses: Record<string, { content?: object }> }>>;
+    };
+    const described = Object.entries(paths).flatMap(([path, item]) => Object.keys(item).map((key) => `${key} ${path}`));
+    const served = server.routes
+      .filter(({ path }) => !path.endsWith('*'))
+      .map(({ method, path }) => `${method.toLowerCase()} ${path.replace(/:(\w+)/g, '{$1}')}`);
+    expect(described.sort()).toEqual([...new Set(served)].sort());
+    const silent = served.filter((line) => {
+      const [method, path] = line.split(' ') as [string, string];
+      const { responses } = paths[path]![method]!;
+      const good = Object.entries(responses).filter(([status]) => status.startsWith('2'));
+      return (
+        path.startsWith('/api/') && !good.some(([status, { content }]) => status === '204' || content !== undefined)
+      );
+    });
+    expect(silent).toEqual([]);
+    await server.close();
+    await database.drop();
+  });
 });

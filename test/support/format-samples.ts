@@ -10,7 +10,7 @@ import { msconsText, nem12Text, profileText } from './sample-messages.js';
 import { sampleParquet } from './sample-parquet.js';
 import { loadAt, sampleWorkbooks } from './sample-workbooks.js';
 import { readMsconsSlowly, readProfileSlowly, type SlowRows } from './slow-message-reading.js';
-import { readSlowly } from './slow-meter-reading.js';
+import { readSlowly, slowText } from './slow-meter-reading.js';
 import { readNem12Slowly } from './slow-nem12-reading.js';
 import { readDaysSlowly, readParquetSlowly, readQuadrantsSlowly, readSheetSlowly } from './slow-row-reading.js';
 import { readCimSlowly, readEspiSlowly } from './slow-xml-reading.js';
@@ -134,7 +134,7 @@ function readTexts(): FormatSample[] {
     ),
     textSample('csv: days in columns', daysText(), (bytes) => readDaysSlowly(utf8(bytes))),
     textSample('quadrant-rows: made', quadrantText(), (bytes, codes) =>
-      readQuadrantsSlowly(utf8(bytes), codes.includes('stamps-assumed-beginnings')),
+      readQuadrantsSlowly(slowText(bytes), codes.includes('stamps-assumed-beginnings')),
     ),
     textSample('nem12: made', nem12Text(), (bytes) => readNem12Slowly(new TextDecoder('windows-1252').decode(bytes)), {
       format: 'nem12',

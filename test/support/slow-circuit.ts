@@ -18,6 +18,16 @@ function elementOf(line: string): Element {
  * @returns magnitude per node [V]
  */
 export function slowCircuit(lines: readonly string[], frequencyHz: number): Map<string, number> {
+  return new Map([...slowPhasors(lines, frequencyHz)].map(([node, { re, im }]) => [node, Math.hypot(re, im)]));
+}
+
+/**
+ * The same with angles.
+ * @param lines as for slowCircuit
+ * @param frequencyHz f [Hz]
+ * @returns phasor per node [V]
+ */
+export function slowPhasors(lines: readonly string[], frequencyHz: number): Map<string, { re: number; im: number }> {
   const elements = lines.map(elementOf);
   const nodes = new Map<string, number>();
   for (const { from, to } of elements) {
@@ -33,7 +43,7 @@ export function slowCircuit(lines: readonly string[], frequencyHz: number): Map<
   }
   for (const [k, { from, to, value }] of sources.entries()) system.hold(nodes.size + k, at(from), at(to), value);
   const { re, im } = system.solve();
-  return new Map([...nodes].map(([node, k]) => [node, Math.hypot(re[k]!, im[k]!)]));
+  return new Map([...nodes].map(([node, k]) => [node, { re: re[k]!, im: im[k]! }]));
 }
 
 function admittanceOf(kind: string, value: number, omega: number): [g: number, s: number] {

@@ -1,5 +1,6 @@
 // Slow and plain readings of MSCONS and of P.01 load profiles, written for samples with energies of one metering point:
 // text is cut by regular expressions, values go through exact decimal strings, nothing is shared with the readers.
+import { slowMean } from './slow-mean.js';
 import { SlowRefusal } from './slow-meter-reading.js';
 
 export interface SlowRows {
@@ -38,7 +39,7 @@ function rowsOf(found: Found, intervalS: number, unitOf: (unit: string) => (type
       if (Number.isNaN(value)) continue;
       const row = rows.get(beginS) ?? [0, 0, 0];
       const kilo = (value * times) / over;
-      row[PLACES[code]!] += energy ? (kilo * 3600) / intervalS : kilo;
+      row[PLACES[code]!] += energy ? slowMean(kilo, intervalS) : kilo;
       rows.set(beginS, row);
       counts.set(beginS, (counts.get(beginS) ?? 0) + 1);
     }

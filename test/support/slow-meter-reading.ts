@@ -1,6 +1,7 @@
 // An independent reading of delimited meter files, for holding the reader against: a CSV library, a text a cell, a date
 // object a stamp. It knows the files it is given (their delimiter, decimal mark and kind of stamp) and finds out nothing else.
 import Papa from 'papaparse';
+import { slowMean } from './slow-mean.js';
 
 /** What is known of a file beforehand. */
 export interface Dialect {
@@ -23,7 +24,7 @@ export class SlowRefusal extends Error {}
  * @throws SlowRefusal where it should be refused or asked about
  */
 export function readSlowly(bytes: Uint8Array, dialect: Dialect): { intervalS: number; rows: Map<number, SlowRow> } {
-  const { data, errors } = Papa.parse<string[]>(textOf(bytes), { delimiter: dialect.delimiter, newline: '\n' });
+  const { data, errors } = Papa.parse<string[]>(slowText(bytes), { delimiter: dialect.delimiter, newline: '\n' });
   const table = data.map((cells) => cells.map((cell) => cell.trim()));
   const headerAt = table.findIndex(
     (cells) =>
@@ -41,7 +42,11 @@ export function readSlowly(bytes: Uint8Array, dialect: Dialect): { intervalS: nu
   return onGrid(read, columns, dialect);
 }
 
-function textOf(bytes: Uint8Array): string {
+/**
+ * The text of a file, UTF-8 where it can be that.
+ * @param bytes the file
+ */
+export function slowText(bytes: Uint8Array): string {
   try {
     return new TextDecoder('utf-8', { fatal: true }).decode(bytes);
   } catch {
@@ -187,7 +192,7 @@ function slowRow({ values }: ReadRow, columns: Columns, intervalS: number): Slow
   const inKilo = (column: Column | null): number | null => {
     const value = column === null ? 0 : values.get(column)!;
     if (column === null || value === null) return value;
-    return column.energy ? (column.scale(value) * 3600) / intervalS : column.scale(value);
+    return column.energy ? slowMean(column.scale(value), intervalS) : column.scale(value);
   };
   const [kw, lagging, leading, signed] = [columns.kw, columns.lagging, columns.leading, columns.signed].map(inKilo);
   if (kw == null || lagging == null || leading == null || signed == null) return null;

@@ -1,5 +1,6 @@
 // An independent reading of NEM12 files, for holding the reader against: a CSV library and a map from interval to value.
 import Papa from 'papaparse';
+import { slowMean } from './slow-mean.js';
 import { SlowRefusal, type SlowRow } from './slow-meter-reading.js';
 
 /** Values of one stream by the beginning of each interval [s]; null where the file says there is none. */
@@ -102,7 +103,7 @@ function valuesOf(cells: string[], { minutes, scale, energy }: Stream) {
     if (!Number.isFinite(value)) throw new SlowRefusal(`value ${cell}`);
     if (flag.startsWith('N')) return null;
     const inKilo = scale === 0.001 ? value / 1000 : value * scale;
-    return energy ? (inKilo * 3600) / (minutes * 60) : inKilo;
+    return energy ? slowMean(inKilo, minutes * 60) : inKilo;
   });
 }
 

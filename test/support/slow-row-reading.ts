@@ -1,6 +1,7 @@
 // Slow and plain readings of quadrant rows, of rows of days, and of sheets and tables that are delimited text in another dress.
 import { brotliDecompressSync, gunzipSync } from 'node:zlib';
 import { parquetReadObjects } from 'hyparquet';
+import { slowMean } from './slow-mean.js';
 import type { SlowRows } from './slow-message-reading.js';
 import { readSlowly, SlowRefusal } from './slow-meter-reading.js';
 import { SlowUnsure } from './slow-xml-reading.js';
@@ -32,7 +33,8 @@ export function readQuadrantsSlowly(text: string, begins: boolean): SlowRows {
   for (const cells of linesOf(text, ';')) {
     if (cells.at(-1) === '' && cells.length === 9) cells.pop();
     const stamp = /^(\d\d)\/(\d\d)\/(\d{4}) (\d\d):(\d\d)$/.exec(cells[0]!);
-    if (stamp === null || cells.length !== 8) throw new SlowUnsure(`row ${cells.join(' ')}`);
+    if (stamp === null || cells.length !== 8 || !/^[01]$/.test(cells[1]!))
+      throw new SlowUnsure(`row ${cells.join(' ')}`);
     const [, day, month, year, hour, minute] = stamp.map(Number);
     const atS = Date.UTC(year!, month! - 1, day, hour, minute) / 1000 - Number(cells[1]) * 3600;
     const values = cells.slice(2).map(numberOf);
@@ -43,7 +45,7 @@ export function readQuadrantsSlowly(text: string, begins: boolean): SlowRows {
   const rows: SlowRows['rows'] = new Map();
   for (const [atS, values] of found) {
     const [ai, ae, r1, r2, r3, r4] = values as [number, number, number, number, number, number];
-    const mean = (energy: number) => (energy * 3600) / intervalS;
+    const mean = (energy: number) => slowMean(energy, intervalS);
     rows.set(atS - (begins ? 0 : intervalS), [mean(ai) - mean(ae), mean(r1 + r2), mean(r3 + r4)]);
   }
   return { intervalS, rows };

@@ -1,5 +1,6 @@
 // Slow and plain readings of ESPI feeds and CIM messages, written for samples with one active and two reactive channels in
 // UTC: tags are cut out by a regular expression, the tree is held whole, nothing is shared with the readers.
+import { slowMean } from './slow-mean.js';
 import type { SlowRows } from './slow-message-reading.js';
 import { SlowRefusal } from './slow-meter-reading.js';
 
@@ -93,7 +94,7 @@ function rowsOf(series: readonly Series[]): SlowRows {
     const row = used.map(({ unit, power, values }) => {
       const over = power < 3 ? 10 ** (3 - power) : 1;
       const kilo = ((values.get(beginS) ?? Number.NaN) * (power > 3 ? 10 ** (power - 3) : 1)) / over;
-      return unit > 71 ? (kilo * 3600) / intervalS : kilo;
+      return unit > 71 ? slowMean(kilo, intervalS) : kilo;
     });
     if (!row.some(Number.isNaN)) rows.set(beginS, row as [number, number, number]);
   }

@@ -52,34 +52,28 @@ export class ExportsController {
 
   @Get('revisions/:revision/plan')
   @Needs('viewer', 'Gives a plan with all its parts: ?form=json, csv (path, kind, value) or xlsx (a sheet a part).')
-  async plan(
-    @Param('siteId') siteId: string,
-    @Param('revision') revision: string,
-    @Query() query: object,
-    @Res() reply: FastifyReply,
-  ) {
-    const result = await this.#result(reply, { siteId, revision });
-    const form = formAsked(query);
-    return attached(reply, 'plan', form).send(planFile(result, planTables(result), form));
+  async plan(@Param() path: RevisionPath, @Query() query: object, @Res() reply: FastifyReply) {
+    return this.#ofRevision({ path, query, reply }, 'plan', (result, form) =>
+      planFile(result, planTables(result), form),
+    );
   }
 
   @Get('revisions/:revision/calculation')
   @Needs('viewer', 'Gives the calculation sheet of a plan: every figure with formula, working and source.')
-  async calculation(
-    @Param('siteId') siteId: string,
-    @Param('revision') revision: string,
-    @Query() query: object,
-    @Res() reply: FastifyReply,
-  ) {
-    const result = await this.#result(reply, { siteId, revision });
-    const form = formAsked(query);
-    const bytes = calculationFile(result.figures, calculationTable(result), form);
-    return attached(reply, 'calculation', form).send(bytes);
+  async calculation(@Param() path: RevisionPath, @Query() query: object, @Res() reply: FastifyReply) {
+    return this.#ofRevision({ path, query, reply }, 'calculation', (result, form) =>
+      calculationFile(result.figures, calculationTable(result), form),
+    );
   }
 
-  async #result({ request }: FastifyReply, path: RevisionPath): Promise<Result | EstimateResult> {
-    const found = await findRevision(this.store, actorOf(request), path);
-    return JSON.parse(found.result) as Result | EstimateResult;
+  async #ofRevision(
+    { path, query, reply }: { path: RevisionPath; query: object; reply: FastifyReply },
+    name: string,
+    fileOf: (result: Result | EstimateResult, form: TableForm) => Uint8Array | string,
+  ) {
+    const revision = await findRevision(this.store, actorOf(reply.request), path);
+    const form = formAsked(query);
+    return attached(reply, name, form).send(fileOf(JSON.parse(revision.result) as Result | EstimateResult, form));
   }
 }
 

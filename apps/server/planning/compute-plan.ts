@@ -64,11 +64,29 @@ export function computePlan({ task, port }: { task: PlanTask; port: MessagePort 
 }
 
 function byRecord(task: PlanTask, record: LoadRecord, watch: Watch): Outcome {
-  if (recordHash(record) !== task.recordHash) throw new Error('the stored record is not the one that was hashed');
-  const judge = task.kind === 'plan' ? planBank : assessBank;
-  const planned = judge(task.site, record, task.zone, partOfWatch(watch, 0, PLANNED));
+  const planned = judgedByRecord(task, record, partOfWatch(watch, 0, PLANNED));
   const computed = withRobustness(planned, partOfWatch(watch, PLANNED, FIRM));
   return { ...computed, result: putInWords(computed.result) };
+}
+
+function judgedByRecord(task: Omit<PlanTask, 'frame'>, record: LoadRecord, watch: Watch): Outcome {
+  if (recordHash(record) !== task.recordHash) throw new Error('the stored record is not the one that was hashed');
+  return (task.kind === 'plan' ? planBank : assessBank)(task.site, record, task.zone, watch);
+}
+
+/**
+ * The outcome of frozen inputs without its ranges, in words.
+ * @param task frozen inputs
+ * @param watch hears of progress
+ */
+export function judged(task: Omit<PlanTask, 'frame'>, watch: Watch): Outcome | EstimateOutcome {
+  const { record, kind, site, zone } = task;
+  if (record !== null) {
+    const outcome = judgedByRecord(task, record, watch);
+    return { ...outcome, result: putInWords(outcome.result) };
+  }
+  const outcome = (kind === 'plan' ? planEstimate : assessEstimate)(site, zone);
+  return { ...outcome, result: putEstimateInWords(outcome.result) };
 }
 
 function byEstimate({ kind, site, zone }: PlanTask): EstimateOutcome {

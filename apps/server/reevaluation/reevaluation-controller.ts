@@ -6,6 +6,7 @@ import { zoneTableOf } from '#libs/contract/time-zone.js';
 import { InputProblem, type SiteThen } from '#libs/engine/index.js';
 import { WorkerPool } from '#libs/jobs/pool/worker-pool.js';
 import { readRecord } from '#libs/store/records.js';
+import type { Revision } from '#libs/store/revision.js';
 import { Store } from '#libs/store/store.js';
 import type { StoredSite } from '#libs/store/stored-site.js';
 import { actorOf } from '../people/actor.js';
@@ -14,7 +15,7 @@ import { findRevision, type RevisionPath } from '../planning/find-revision.js';
 import { Planning } from '../planning/planning.js';
 import { revisionHead } from '../planning/show-revision.js';
 import { findSite } from '../sites/find-site.js';
-import type { ReevaluationTask, ReevaluationValue } from './compute-reevaluation.js';
+import type { ReevaluationPaperTask, ReevaluationTask, ReevaluationValue } from './compute-reevaluation.js';
 import { siteThen } from './site-then.js';
 
 /** A bank as it stands now, beside what a revision found. */
@@ -32,12 +33,30 @@ export class ReevaluationController {
     'Judges the site’s bank by its latest record beside a revision: what to do first, what changed, what mends it. Nothing is kept.',
   )
   async reevaluate(@Param() path: RevisionPath, @Res() reply: FastifyReply) {
-    const actor = actorOf(reply.request);
-    const revision = await findRevision(this.store, actor, path);
-    const after = await this.#now(await findSite(this.store, actor, path.siteId));
-    const task: ReevaluationTask = { before: await siteThen(this.store, revision), after };
+    const { revision, task } = await this.#asked(path, reply);
     const value = await this.pool.run<ReevaluationValue>('computeReevaluation', task);
     return reply.send({ revision: revisionHead(revision), ...value });
+  }
+
+  @Get('proposal.pdf')
+  @Needs('viewer', 'Draws the same as a paper, a draft of no revision; nothing is kept.')
+  async proposal(@Param() path: RevisionPath, @Res() reply: FastifyReply) {
+    const { revision, task } = await this.#asked(path, reply);
+    const reason = `Judged again beside ${revision.number}, revision ${revision.revision}.`;
+    const paper: ReevaluationPaperTask = { ...task, reason };
+    const bytes = await this.pool.run<Uint8Array>('computeReevaluationPaper', paper);
+    const filename = `${revision.number}-revision-${revision.revision}-again.pdf`;
+    return reply
+      .type('application/pdf')
+      .header('content-disposition', `inline; filename="${filename}"`)
+      .send(Buffer.from(bytes));
+  }
+
+  async #asked(path: RevisionPath, { request }: FastifyReply): Promise<{ revision: Revision; task: ReevaluationTask }> {
+    const actor = actorOf(request);
+    const revision = await findRevision(this.store, actor, path);
+    const after = await this.#now(await findSite(this.store, actor, path.siteId));
+    return { revision, task: { before: await siteThen(this.store, revision), after } };
   }
 
   async #now(stored: StoredSite): Promise<SiteThen> {

@@ -1,22 +1,20 @@
-/** What the routes of review and verification answer with, for the API's description. */
-const text = { type: 'string' };
-const whole = { type: 'integer' };
-const open = { type: 'object', additionalProperties: true };
-const listOf = (items: object) => ({ type: 'array', items });
-const nullable = (schema: object) => ({ ...schema, nullable: true });
-const answer = (description: string, schema: object) => ({
-  responses: { 200: { description, content: { 'application/json': { schema } } } },
-});
-const paper = (description: string) => ({
-  responses: { 200: { description, content: { 'application/pdf': { schema: { type: 'string', format: 'binary' } } } } },
-});
-const IF_MATCH = {
-  in: 'header',
-  name: 'If-Match',
-  description: 'the ETag the review was read with',
-  required: true,
-  schema: text,
-};
+import {
+  file,
+  fileBody,
+  header,
+  json,
+  listOf,
+  nullable,
+  open,
+  type Part,
+  query,
+  schemaOf,
+  text,
+  whole,
+} from '../open-api-answers.js';
+
+const answer = (description: string, schema: object): Part => ({ responses: { 200: json(description, schema) } });
+const IF_MATCH = header('If-Match', 'the ETag the review was read with', true);
 
 const STATES = ['draft', 'forReview', 'approved', 'superseded', 'withdrawn'];
 const STANDINGS = ['approved', 'superseded', 'withdrawn', 'draft', 'altered', 'unknown'];
@@ -63,13 +61,9 @@ export const REVIEW_SCHEMAS: Record<string, object> = {
 
 const revision = '/api/sites/{siteId}/revisions/{revision}';
 const acts = ['submit', 'findings', 'hand-checks', 'comments', 'return', 'own-approval', 'approve', 'supersede'];
-const schemaOf = (name: string) => ({ $ref: `#/components/schemas/${name}` });
 
 /** By method and path; merged into the description. */
-export const REVIEW_PARTS: Record<
-  string,
-  { parameters?: object[]; requestBody?: object; responses?: Record<string, object> }
-> = {
+export const REVIEW_PARTS: Record<string, Part> = {
   [`get ${revision}/review`]: answer('The review; the ETag is its version.', schemaOf('Review')),
   ...Object.fromEntries(
     [...acts, 'withdraw', 'commissioning'].map((act) => [
@@ -77,20 +71,15 @@ export const REVIEW_PARTS: Record<
       { parameters: [IF_MATCH], ...answer('The review after it.', schemaOf('Review')) },
     ]),
   ),
-  [`get ${revision}/approved.pdf`]: paper('The paper of the approval.'),
+  [`get ${revision}/approved.pdf`]: { responses: { 200: file('The paper of the approval.', 'application/pdf') } },
   [`get ${revision}/differences/{other}`]: answer('What differs.', schemaOf('Differences')),
   [`post ${revision}/again`]: answer('What the engine as it is makes of the same inputs, and what differs.', open),
   'post /api/verify': {
-    requestBody: {
-      required: true,
-      content: { 'application/pdf': { schema: { type: 'string', format: 'binary' } } },
-    },
+    requestBody: fileBody('application/pdf'),
     ...answer('What the paper is worth.', schemaOf('VerifiedPaper')),
   },
   'get /api/verify': {
-    parameters: [
-      { in: 'query', name: 'number', description: 'content number, 16 or 64 digits', required: true, schema: text },
-    ],
+    parameters: [query('number', 'content number, 16 or 64 digits', text, true)],
     ...answer('The revisions of that number.', open),
   },
 };

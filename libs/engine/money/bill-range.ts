@@ -35,7 +35,7 @@ const SUM_WIDTH = 1e-9;
  * @source derived: interval arithmetic over the clauses
  */
 export function rangeTariff(prepared: PreparedTariff): RangedTariff {
-  const boxes = new BoxReadings(prepared.calendar, prepared.demandS);
+  const boxes = new BoxReadings(prepared.ground.groupings);
   const ground: RangeGround = { ...prepared.ground, boxes, carriedRows: 0 };
   const clauses = prepared.clauses.map(({ clause }, k) => rangedClause(ground, clause, k));
   return { prepared, boxes, clauses, carriedRows: ground.carriedRows };

@@ -1,12 +1,11 @@
 import { DemandBox } from './demand-box.js';
 import { EnergyReading } from './energy-reading.js';
-import { demandBlocks, type Grouping, type Period, periods } from './grouping.js';
+import type { Grouping, Groupings, Period } from './grouping.js';
 import type { MeterBox } from './meter-box.js';
 import type { ReactiveBasis } from './papers.js';
 import type { Range } from './range.js';
 import { reactiveOf } from './reactive-basis.js';
 import type { Selection } from './selection.js';
-import type { TariffCalendar } from './tariff-calendar.js';
 
 /** Energies of a selection between the ends of a box, period by period. */
 export class EnergyBox {
@@ -73,18 +72,13 @@ export class EnergyBox {
 
 /** The boxes a tariff's bounds ask for, each formed once a month. */
 export class BoxReadings {
-  readonly #calendar: TariffCalendar;
-  readonly #demandS: number;
+  readonly #groupings: Groupings;
   readonly #energies = new Map<string, EnergyBox>();
   readonly #demands = new Map<string, DemandBox>();
 
-  /**
-   * @param calendar the record by the site's clock
-   * @param demandS length of a demand block [s]
-   */
-  constructor(calendar: TariffCalendar, demandS: number) {
-    this.#calendar = calendar;
-    this.#demandS = demandS;
+  /** @param groupings blocks and periods of the tariff on its record */
+  constructor(groupings: Groupings) {
+    this.#groupings = groupings;
   }
 
   /**
@@ -97,7 +91,8 @@ export class BoxReadings {
     const key = `${per} ${selection.key}`;
     const known = this.#energies.get(key);
     if (known !== undefined) return known;
-    const made = new EnergyBox(selection, this.#periods(selection, per), this.#calendar.intervalS / 3600);
+    const groupings = this.#groupings;
+    const made = new EnergyBox(selection, groupings.periods(selection, per), groupings.calendar.intervalS / 3600);
     this.#energies.set(key, made);
     return made;
   }
@@ -113,9 +108,9 @@ export class BoxReadings {
     const key = `${per} ${basis} ${selection.key}`;
     const known = this.#demands.get(key);
     if (known !== undefined) return known;
-    const within = this.#periods(selection, per);
-    const blocks = demandBlocks(this.#calendar, selection, this.#demandS, within);
-    const made = new DemandBox({ selection, blocks, periods: within, basis });
+    const periods = this.#groupings.periods(selection, per);
+    const blocks = this.#groupings.blocks(selection, per);
+    const made = new DemandBox({ selection, blocks, periods, basis });
     this.#demands.set(key, made);
     return made;
   }
@@ -124,10 +119,6 @@ export class BoxReadings {
   get wholeMonths(): EnergyBox[] | null {
     const boxes = [...this.#energies.values()];
     return this.#demands.size === 0 && boxes.every(({ byMonth }) => byMonth) ? boxes : null;
-  }
-
-  #periods(selection: Selection, per: Period): Grouping | null {
-    return per === 'month' ? null : periods(this.#calendar, selection, per);
   }
 
   /**

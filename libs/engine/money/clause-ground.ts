@@ -1,4 +1,4 @@
-import type { Period } from './grouping.js';
+import type { Groupings, Period } from './grouping.js';
 import type { Clause, Tariff } from './papers.js';
 import type { FactorReadings, SettledFactorRule } from './power-factor-rule.js';
 import type { Selection, WindowMasks } from './selection.js';
@@ -10,6 +10,7 @@ export interface ClauseGround {
   tariff: Tariff;
   calendar: TariffCalendar;
   masks: WindowMasks;
+  groupings: Groupings;
   readings: TariffReadings;
   factor: SettledFactorRule;
   /** rows of carried quantities handed out so far; a clause that looks back takes one for each of its parts */

@@ -46,6 +46,10 @@ export class DemandBox {
     for (const ends of [this.#low, this.#high]) {
       for (const column of Object.values(ends) as Float64Array[]) column.fill(0, 0, this.periods);
     }
+    if (periods === null && blocks.single[m]!) {
+      this.#readSingle(m, box);
+      return;
+    }
     this.#meanBlocks(m, box);
     const periodOfBlock = this.#periodOfBlock?.[m] ?? null;
     const count = blocks.sizes[m]!.length;
@@ -53,6 +57,59 @@ export class DemandBox {
     this.#low.laggingAtMaxKw.fill(Number.POSITIVE_INFINITY, 0, this.periods);
     this.#low.leadingAtMaxKw.fill(Number.POSITIVE_INFINITY, 0, this.periods);
     for (let b = 0; b < count; b++) this.#takeAtMaxKw(b, periodOfBlock === null ? 0 : periodOfBlock[b]!);
+  }
+
+  // Whole months of blocks that are intervals: the same ends, kept in locals. A search forms hundreds of them.
+  // biome-ignore lint/complexity/noExcessiveCognitiveComplexity: a kernel; its greatest values stay in locals
+  #readSingle(m: number, { low, high }: MeterBox): void {
+    const { selection, basis } = this.#shape;
+    const { intervals, monthFrom } = selection;
+    let [lowKw, highKw, lowSquare, highSquare, lowKvar, highKvar] = [0, 0, 0, 0, 0, 0];
+    for (let k = monthFrom[m]!; k < monthFrom[m + 1]!; k++) {
+      const i = intervals[k]!;
+      const [kwLo, kwHi] = [low.activeKw[i]!, high.activeKw[i]!];
+      const [laggingLo, laggingHi] = [low.laggingKvar[i]!, high.laggingKvar[i]!];
+      const [leadingLo, leadingHi] = [low.leadingKvar[i]!, high.leadingKvar[i]!];
+      const netLo = laggingLo - leadingHi;
+      const netHi = laggingHi - leadingLo;
+      if (kwLo > lowKw) lowKw = kwLo;
+      if (kwHi > highKw) highKw = kwHi;
+      const nearKw = kwLo > 0 ? kwLo : Math.min(kwHi, 0);
+      const nearNet = netLo > 0 ? netLo : Math.min(netHi, 0);
+      const near = nearKw * nearKw + nearNet * nearNet;
+      if (near > lowSquare) lowSquare = near;
+      const farKw = -kwLo > kwHi ? kwLo : kwHi;
+      const farNet = -netLo > netHi ? netLo : netHi;
+      const far = farKw * farKw + farNet * farNet;
+      if (far > highSquare) highSquare = far;
+      const kvarLo = basis === 'net' ? netLo : reactiveOf(basis, laggingLo, leadingLo);
+      const kvarHi = basis === 'net' ? netHi : reactiveOf(basis, laggingHi, leadingHi);
+      if (kvarLo > lowKvar) lowKvar = kvarLo;
+      if (kvarHi > highKvar) highKvar = kvarHi;
+    }
+    put(this.#low, { kw: lowKw, kva: Math.sqrt(lowSquare), kvar: lowKvar });
+    put(this.#high, { kw: highKw, kva: Math.sqrt(highSquare), kvar: highKvar });
+    this.#readSingleAtMaxKw(m, { low, high });
+  }
+
+  // The interval of greatest kW is one of those whose upper end reaches the greatest lower end.
+  #readSingleAtMaxKw(m: number, { low, high }: MeterBox): void {
+    const { intervals, monthFrom } = this.#shape.selection;
+    const reached = this.#low.kw[0]!;
+    const infinite = Number.POSITIVE_INFINITY;
+    let [laggingLo, leadingLo, laggingHi, leadingHi] = [infinite, infinite, 0, 0];
+    for (let k = monthFrom[m]!; k < monthFrom[m + 1]!; k++) {
+      const i = intervals[k]!;
+      if (high.activeKw[i]! < reached && reached > 0) continue;
+      laggingLo = Math.min(laggingLo, low.laggingKvar[i]!);
+      leadingLo = Math.min(leadingLo, low.leadingKvar[i]!);
+      laggingHi = Math.max(laggingHi, high.laggingKvar[i]!);
+      leadingHi = Math.max(leadingHi, high.leadingKvar[i]!);
+    }
+    this.#low.laggingAtMaxKw[0] = laggingLo;
+    this.#low.leadingAtMaxKw[0] = leadingLo;
+    this.#high.laggingAtMaxKw[0] = laggingHi;
+    this.#high.leadingAtMaxKw[0] = leadingHi;
   }
 
   #meanBlocks(m: number, { low, high }: MeterBox): void {
@@ -64,7 +121,7 @@ export class DemandBox {
       for (let k = selection.monthFrom[m]!; k < selection.monthFrom[m + 1]!; k++) {
         mean[blocks.groupOf[k]!]! += column[selection.intervals[k]!]!;
       }
-      if (!blocks.single) for (let b = 0; b < sizes.length; b++) mean[b]! /= sizes[b]!;
+      if (!blocks.single[m]!) for (let b = 0; b < sizes.length; b++) mean[b]! /= sizes[b]!;
     }
   }
 
@@ -139,6 +196,12 @@ export class DemandBox {
 function endsOf(periods: number): Ends {
   const column = (): Float64Array => new Float64Array(periods);
   return { kw: column(), kva: column(), kvar: column(), laggingAtMaxKw: column(), leadingAtMaxKw: column() };
+}
+
+function put(ends: Ends, { kw, kva, kvar }: { kw: number; kva: number; kvar: number }): void {
+  ends.kw[0] = kw;
+  ends.kva[0] = kva;
+  ends.kvar[0] = kvar;
 }
 
 function raise(column: Float64Array, at: number, value: number): void {

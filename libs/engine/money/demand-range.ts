@@ -11,7 +11,6 @@ import {
 import type { DemandBox } from './demand-box.js';
 import { compileFormula } from './formula.js';
 import { formulaRange } from './formula-range.js';
-import { periods } from './grouping.js';
 import type { DemandClause, FormulaClause, KvarBeyondRatioClause } from './papers.js';
 import { exactly, plus, type Range, scaled, times } from './range.js';
 import { scaleRange } from './scale-range.js';
@@ -166,7 +165,7 @@ function quantityRange(ground: RangeGround, clause: FormulaClause, name: string)
       return ({ m }) => exactly(((monthFrom[m + 1]! - monthFrom[m]!) * ground.calendar.intervalS) / 3600);
     }
     case 'days': {
-      const { sizes } = periods(ground.calendar, selection, 'day');
+      const { sizes } = ground.groupings.days(selection);
       return ({ m }) => exactly(sizes[m]!.length);
     }
     case 'coverage':

@@ -66,11 +66,44 @@ export class DemandReading {
     this.laggingAtMaxKw.fill(0, 0, this.periods);
     this.leadingAtMaxKw.fill(0, 0, this.periods);
     this.#highestKw.fill(Number.NEGATIVE_INFINITY, 0, this.periods);
+    if (periods === null && blocks.single[m]!) {
+      this.#readSingle(m, columns);
+      return;
+    }
     this.#meanBlocks(m, columns);
     const sizes = blocks.sizes[m]!;
     const periodOfBlock = this.#periodOfBlock?.[m] ?? null;
     for (let b = 0; b < sizes.length; b++) this.#take(b, periodOfBlock === null ? 0 : periodOfBlock[b]!);
     for (let period = 0; period < this.periods; period++) this.maxKva[period] = Math.sqrt(this.maxKva[period]!);
+  }
+
+  // Whole months of blocks that are intervals: the same greatest values, kept in locals.
+  #readSingle(m: number, { activeKw, laggingKvar, leadingKvar }: MeterColumns): void {
+    const { selection, basis } = this.#shape;
+    const { intervals, monthFrom } = selection;
+    let highestKw = Number.NEGATIVE_INFINITY;
+    let at = -1;
+    let [square, kvar] = [0, 0];
+    for (let k = monthFrom[m]!; k < monthFrom[m + 1]!; k++) {
+      const i = intervals[k]!;
+      const kw = activeKw[i]!;
+      const [lagging, leading] = [laggingKvar[i]!, leadingKvar[i]!];
+      if (kw > highestKw) {
+        highestKw = kw;
+        at = i;
+      }
+      const net = lagging - leading;
+      const found = kw * kw + net * net;
+      if (found > square) square = found;
+      const reactive = reactiveOf(basis, lagging, leading);
+      if (reactive > kvar) kvar = reactive;
+    }
+    if (at < 0) return;
+    this.maxKw[0] = Math.max(highestKw, 0);
+    this.laggingAtMaxKw[0] = laggingKvar[at]!;
+    this.leadingAtMaxKw[0] = leadingKvar[at]!;
+    this.maxKva[0] = Math.sqrt(square);
+    this.maxKvar[0] = kvar;
   }
 
   #meanBlocks(m: number, columns: MeterColumns): void {
@@ -86,7 +119,7 @@ export class DemandReading {
       lagging[block]! += columns.laggingKvar[i]!;
       leading[block]! += columns.leadingKvar[i]!;
     }
-    if (blocks.single) return;
+    if (blocks.single[m]!) return;
     for (let b = 0; b < sizes.length; b++) {
       kw[b]! /= sizes[b]!;
       lagging[b]! /= sizes[b]!;

@@ -2,7 +2,6 @@ import { InputProblem } from '../problem.js';
 import { type ClauseGround, factorReadings, type MonthRun, type ReadyClause, selectionOf } from './clause-ground.js';
 import { compileFormula, type Formula, formulaWorking } from './formula.js';
 import { FormulaFault } from './formula-tokens.js';
-import { periods } from './grouping.js';
 import type { FormulaClause, PercentClause, ReactiveBasis } from './papers.js';
 import { powerFactorBy } from './power-factor-rule.js';
 import { scalePct } from './scale.js';
@@ -124,7 +123,7 @@ function calendarQuantity(ground: ClauseGround, selection: Selection, quantity: 
     case 'hours':
       return ({ m }) => ((selection.monthFrom[m + 1]! - selection.monthFrom[m]!) * ground.calendar.intervalS) / 3600;
     case 'days': {
-      const { sizes } = periods(ground.calendar, selection, 'day');
+      const { sizes } = ground.groupings.days(selection);
       return ({ m }) => sizes[m]!.length;
     }
     case 'coverage':

@@ -7,8 +7,8 @@ export interface Grouping {
   groupOf: Int32Array;
   /** intervals in each group, one list a month */
   sizes: Float64Array[];
-  /** every group is a single interval */
-  single: boolean;
+  /** in which months every group is a single interval, in their order */
+  single: boolean[];
   /** most groups of a month */
   most: number;
 }
@@ -26,7 +26,7 @@ export type Period = 'month' | 'day' | 'hour' | 'interval';
  * @returns the grouping
  * @source method-money
  */
-export function demandBlocks(
+function demandBlocks(
   calendar: TariffCalendar,
   selection: Selection,
   blockS: number,
@@ -50,7 +50,7 @@ export function demandBlocks(
  * @returns the grouping
  * @source method-money
  */
-export function periods(calendar: TariffCalendar, selection: Selection, per: Period): Grouping {
+function periods(calendar: TariffCalendar, selection: Selection, per: Period): Grouping {
   const { localS } = calendar;
   const keys: Record<Period, (i: number) => number> = {
     month: () => 0,
@@ -61,31 +61,88 @@ export function periods(calendar: TariffCalendar, selection: Selection, per: Per
   return groupIntervals(selection, keys[per]);
 }
 
+/** The groupings of a tariff on its record's calendar, each formed once however many readings ask for it. */
+export class Groupings {
+  readonly calendar: TariffCalendar;
+  readonly #demandS: number;
+  readonly #periods = new Map<string, Grouping>();
+  readonly #blocks = new Map<string, Grouping>();
+
+  /**
+   * @param calendar the record by the site's clock
+   * @param demandS length of a demand block [s]
+   */
+  constructor(calendar: TariffCalendar, demandS: number) {
+    this.calendar = calendar;
+    this.#demandS = demandS;
+  }
+
+  /**
+   * The periods of a selection.
+   * @param selection the intervals
+   * @param per length of a period
+   * @returns null for whole months
+   */
+  periods(selection: Selection, per: Period): Grouping | null {
+    if (per === 'month') return null;
+    return kept(this.#periods, `${per} ${selection.key}`, () => periods(this.calendar, selection, per));
+  }
+
+  /**
+   * The local days of a selection.
+   * @param selection the intervals
+   * @returns one group a day
+   */
+  days(selection: Selection): Grouping {
+    return kept(this.#periods, `day ${selection.key}`, () => periods(this.calendar, selection, 'day'));
+  }
+
+  /**
+   * The demand blocks of a selection, none of which runs over the end of a period.
+   * @param selection the intervals
+   * @param per length of a period
+   * @returns the blocks
+   */
+  blocks(selection: Selection, per: Period): Grouping {
+    return kept(this.#blocks, `${per} ${selection.key}`, () =>
+      demandBlocks(this.calendar, selection, this.#demandS, this.periods(selection, per)),
+    );
+  }
+}
+
+function kept(known: Map<string, Grouping>, key: string, make: () => Grouping): Grouping {
+  const made = known.get(key) ?? make();
+  known.set(key, made);
+  return made;
+}
+
 // Groups are numbered by their first interval. Keys ascend but where the clock is set back, so the search back is short.
 function groupIntervals(selection: Selection, keyOf: (i: number, k: number) => number): Grouping {
   const { intervals, monthFrom } = selection;
   const groupOf = new Int32Array(intervals.length);
   const sizes: Float64Array[] = [];
+  const single: boolean[] = [];
   let most = 0;
-  let single = true;
   for (let m = 0; m + 1 < monthFrom.length; m++) {
-    const keys: number[] = [];
-    const counts: number[] = [];
+    const [from, end] = [monthFrom[m]!, monthFrom[m + 1]!];
+    const keys = new Float64Array(end - from);
+    const counts = new Float64Array(end - from);
+    let groups = 0;
     let highest = Number.NEGATIVE_INFINITY;
-    for (let k = monthFrom[m]!; k < monthFrom[m + 1]!; k++) {
+    for (let k = from; k < end; k++) {
       const key = keyOf(intervals[k]!, k);
-      let group = key > highest ? -1 : keys.lastIndexOf(key);
+      let group = key > highest ? -1 : keys.lastIndexOf(key, groups - 1);
       if (group < 0) {
-        group = keys.push(key) - 1;
-        counts.push(0);
-        highest = Math.max(highest, key);
+        group = groups++;
+        keys[group] = key;
+        if (key > highest) highest = key;
       }
       groupOf[k] = group;
       counts[group]!++;
-      if (counts[group]! > 1) single = false;
     }
-    sizes.push(Float64Array.from(counts));
-    most = Math.max(most, keys.length);
+    sizes.push(counts.slice(0, groups));
+    single.push(groups === end - from);
+    most = Math.max(most, groups);
   }
   return { groupOf, sizes, single, most };
 }

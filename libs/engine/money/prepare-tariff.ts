@@ -6,6 +6,7 @@ import { demandClause, kvarClause } from './demand-clauses.js';
 import { formulaClause, percentClause, quantityOf } from './derived-clauses.js';
 import { energyByFactorClause, energyClause, fixedClause, kvarhClause } from './energy-clauses.js';
 import { WINDOWED_NAMES } from './formula.js';
+import { Groupings } from './grouping.js';
 import type { MeterColumns } from './meter-columns.js';
 import type { Clause, Tariff } from './papers.js';
 import { powerFactorBy, settleFactorRule } from './power-factor-rule.js';
@@ -54,11 +55,13 @@ export function prepareTariff(tariff: Tariff, span: RecordSpan, zone: ZoneTable)
   const demandS = tariff.demandS ?? span.intervalS;
   if (demandS < span.intervalS || demandS % span.intervalS !== 0) throw wrongDemand(demandS, span.intervalS);
   const calendar = tariffCalendar(span, zone, tariff.holidays ?? []);
+  const groupings = new Groupings(calendar, demandS);
   const ground: ClauseGround = {
     tariff,
     calendar,
     masks: new WindowMasks(calendar, tariff.windows ?? []),
-    readings: new TariffReadings(calendar, demandS),
+    groupings,
+    readings: new TariffReadings(groupings),
     factor: settleFactorRule(tariff.factor),
     carriedRows: 0,
   };
@@ -135,7 +138,7 @@ export function tariffQuantities(
   prepared: PreparedTariff,
 ): (run: MonthRun, columns: MeterColumns) => Record<string, number | null> {
   // Readings of their own: what is only shown must not slow down what is priced a thousand times.
-  const readings = new TariffReadings(prepared.calendar, prepared.demandS);
+  const readings = new TariffReadings(prepared.ground.groupings);
   const ground: ClauseGround = { ...prepared.ground, readings };
   const all = ground.masks.selection(ALWAYS);
   const meant = { selection: all, basis: 'lagging' } as const;

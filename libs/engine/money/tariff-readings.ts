@@ -1,25 +1,19 @@
 import { DemandReading } from './demand-reading.js';
 import { EnergyReading } from './energy-reading.js';
-import { demandBlocks, type Grouping, type Period, periods } from './grouping.js';
+import type { Groupings, Period } from './grouping.js';
 import type { MeterColumns } from './meter-columns.js';
 import type { ReactiveBasis } from './papers.js';
 import type { Selection } from './selection.js';
-import type { TariffCalendar } from './tariff-calendar.js';
 
 /** The readings a tariff's clauses ask for, each formed once a month however many clauses use it. */
 export class TariffReadings {
-  readonly #calendar: TariffCalendar;
-  readonly #demandS: number;
+  readonly #groupings: Groupings;
   readonly #energies = new Map<string, EnergyReading>();
   readonly #demands = new Map<string, DemandReading>();
 
-  /**
-   * @param calendar the record by the site's clock
-   * @param demandS length of a demand block [s]
-   */
-  constructor(calendar: TariffCalendar, demandS: number) {
-    this.#calendar = calendar;
-    this.#demandS = demandS;
+  /** @param groupings blocks and periods of the tariff on its record */
+  constructor(groupings: Groupings) {
+    this.#groupings = groupings;
   }
 
   /**
@@ -32,7 +26,8 @@ export class TariffReadings {
     const key = `${per} ${selection.key}`;
     const known = this.#energies.get(key);
     if (known !== undefined) return known;
-    const made = new EnergyReading(selection, this.#periods(selection, per), this.#calendar.intervalS / 3600);
+    const groupings = this.#groupings;
+    const made = new EnergyReading(selection, groupings.periods(selection, per), groupings.calendar.intervalS / 3600);
     this.#energies.set(key, made);
     return made;
   }
@@ -48,15 +43,11 @@ export class TariffReadings {
     const key = `${per} ${basis} ${selection.key}`;
     const known = this.#demands.get(key);
     if (known !== undefined) return known;
-    const within = this.#periods(selection, per);
-    const blocks = demandBlocks(this.#calendar, selection, this.#demandS, within);
-    const made = new DemandReading({ selection, blocks, periods: within, basis });
+    const periods = this.#groupings.periods(selection, per);
+    const blocks = this.#groupings.blocks(selection, per);
+    const made = new DemandReading({ selection, blocks, periods, basis });
     this.#demands.set(key, made);
     return made;
-  }
-
-  #periods(selection: Selection, per: Period): Grouping | null {
-    return per === 'month' ? null : periods(this.#calendar, selection, per);
   }
 
   /**

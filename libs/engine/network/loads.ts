@@ -17,7 +17,7 @@ export interface OrderPct {
   orderH: number;
   /** [%] of the fundamental current (loads) or of nominal voltage (background) */
   pct: number;
-  /** angle to a reference common to the loads of a bus, where known [°]; those with angles add as phasors */
+  /** angle to a reference common to all loads, the supply’s own voltage say, where known [°]; those with angles add as phasors */
   angleDeg?: number;
 }
 

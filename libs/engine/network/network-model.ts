@@ -7,7 +7,7 @@ import type { Loads } from './loads.js';
 import { networkStates } from './network-states.js';
 import { type NodalCase, nodalCase } from './nodal-case.js';
 import { type NodalTable, nodalTable } from './nodal-impedance.js';
-import { combine, type Excitation, excitation } from './summation.js';
+import { type BusInjection, busInjection, combine, type Excitation, excitation } from './summation.js';
 import type { Topology } from './topology.js';
 
 /** What drives a network at each order present, bank left out; length n. */
@@ -29,8 +29,8 @@ export interface NodalModel {
   eliminated: EliminatedNetwork[];
   /** per network, at the orders present */
   tables: NodalTable[];
-  /** per bus: combined current of the loads at it, at the orders present [A] */
-  injectedA: Float64Array[];
+  /** per bus: what the loads at it inject at the orders present */
+  injected: BusInjection[];
 }
 
 /** Everything about the network that does not depend on the bank, tabled once. */
@@ -146,7 +146,7 @@ function nodalModel(parts: {
     cases,
     eliminated: cases.map((nodal) => new EliminatedNetwork(nodal, nodal.busNode[topology.bankBus]!)),
     tables: cases.map((nodal) => nodalTable(nodal, present.ordersH)),
-    injectedA: topology.buses.map((name, bus) => busInjection(loads, present, { name, first: bus === 0 })),
+    injected: topology.buses.map((name, bus) => injectedAt(loads, present, { name, first: bus === 0 })),
   };
 }
 
@@ -156,10 +156,9 @@ function withListed(loads: Loads, { motorKw, resistiveKw }: Topology): Loads {
   return { ...loads, dampingKw: { min: loads.dampingKw.min, max: loads.dampingKw.max + listedKw } };
 }
 
-function busInjection(loads: Loads, present: Excitation, bus: { name: string; first: boolean }): Float64Array {
+function injectedAt(loads: Loads, present: Excitation, bus: { name: string; first: boolean }): BusInjection {
   const here = (loads.distorting ?? []).filter((load) => (load.bus === undefined ? bus.first : load.bus === bus.name));
-  const own = excitation({ ...loads, distorting: here, backgroundPct: [] }, 1);
-  return present.ordersH.map((h) => own.injectedA[own.ordersH.indexOf(h)] ?? 0);
+  return busInjection({ ...loads, distorting: here }, present);
 }
 
 function drive({ source }: NetworkTable, { injectedA, backgroundV, exponent }: Excitation): Drive {

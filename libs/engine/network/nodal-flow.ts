@@ -7,7 +7,8 @@ import { combine } from './summation.js';
  * The flow in a network of several buses. Connecting the bank at bus b is a rank-1 change of the impedance matrix,
  * Z_pq = z_pq − z_pb·z_bq·Y/(1 + Y·z_bb). From the loads of one bus j: V_i = |Z_ij|·I_j and source current |Z_sj/Z_s|·I_j,
  * s the node behind the source; from the background V_i = |Z_is|·E/|Z_s|, source current |E·(1 − Z_ss/Z_s)/Z_s|.
- * Contributions combine with the order's exponent.
+ * Contributions combine with the order's exponent, the currents with
+ * angles as one: |Σ Z_ij·I_j|.
  * @param model the network without the bank, with several buses
  * @param stages y of one stage of each group at the orders present
  * @param flow level, corner and vector are read, everything else is filled
@@ -56,8 +57,11 @@ class OrderAt {
   readonly #sourceIm: number;
   readonly #alpha: number;
   readonly #backgroundV: number;
-  /** current injected per node [A] */
+  /** loads without angles, combined per node [A] */
   readonly #injectedA: Float64Array;
+  /** phasor sum of the loads with angles, per node [A] */
+  readonly #phasorRe: Float64Array;
+  readonly #phasorIm: Float64Array;
   #bankRe = 0;
   #bankIm = 0;
   /** 1 + Y·z_bb */
@@ -80,9 +84,13 @@ class OrderAt {
     this.#alpha = model.excitation.exponent[place.order]!;
     this.#backgroundV = model.excitation.backgroundV[place.order]!;
     this.#injectedA = new Float64Array(table.nodes);
-    for (const [bus, injected] of nodal.injectedA.entries()) {
+    this.#phasorRe = new Float64Array(table.nodes);
+    this.#phasorIm = new Float64Array(table.nodes);
+    for (const [bus, { magnitudeA, re, im }] of nodal.injected.entries()) {
       const node = nodalCase.busNode[bus]!;
-      this.#injectedA[node] = combine(this.#injectedA[node]!, injected[place.order]!, this.#alpha);
+      this.#injectedA[node] = combine(this.#injectedA[node]!, magnitudeA[place.order]!, this.#alpha);
+      this.#phasorRe[node]! += re[place.order]!;
+      this.#phasorIm[node]! += im[place.order]!;
     }
     this.#order = place.order;
   }
@@ -109,7 +117,7 @@ class OrderAt {
   }
 
   voltageV(node: number): number {
-    let v = 0;
+    let v = this.#ofPhasors(node);
     for (let j = 0; j < this.#n; j++) {
       const injected = this.#injectedA[j]!;
       if (injected > 0) v = combine(v, magnitude(this.#transfer(node, j)) * injected, this.#alpha);
@@ -120,7 +128,7 @@ class OrderAt {
   }
 
   sourceA(): number {
-    let a = 0;
+    let a = this.#ofPhasors(this.#sourceNode) / this.#sourceOhm();
     for (let j = 0; j < this.#n; j++) {
       const injected = this.#injectedA[j]!;
       if (injected === 0) continue;
@@ -131,6 +139,21 @@ class OrderAt {
     const [re, im] = this.#transfer(this.#sourceNode, this.#sourceNode);
     const rest = magnitude([this.#sourceRe - re, this.#sourceIm - im]);
     return combine(a, (this.#backgroundV * rest) / this.#sourceOhm() ** 2, this.#alpha);
+  }
+
+  // |Σ Z_ij·I_j| over the loads with angles: they add before their magnitude is taken.
+  #ofPhasors(node: number): number {
+    let sumRe = 0;
+    let sumIm = 0;
+    for (let j = 0; j < this.#n; j++) {
+      const aRe = this.#phasorRe[j]!;
+      const aIm = this.#phasorIm[j]!;
+      if (aRe === 0 && aIm === 0) continue;
+      const [re, im] = this.#transfer(node, j);
+      sumRe += re * aRe - im * aIm;
+      sumIm += re * aIm + im * aRe;
+    }
+    return magnitude([sumRe, sumIm]);
   }
 
   #sourceOhm(): number {

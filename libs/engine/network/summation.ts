@@ -40,27 +40,63 @@ export interface Excitation {
   backgroundV: Float64Array;
 }
 
+/** Currents of some loads at one order: the sum of those with angles, and every other by itself [A]. */
+interface OrderCurrents {
+  re: number;
+  im: number;
+  magnitudesA: number[];
+}
+
 // Currents with angles are one phasor sum; each of the others stands for itself.
-function currentsByOrder(loads: Loads): Map<number, number[]> {
-  const phasors = new Map<number, { re: number; im: number }>();
-  const found = new Map<number, number[]>();
+function currentsByOrder(loads: Pick<Loads, 'distorting' | 'factors'>): Map<number, OrderCurrents> {
+  const found = new Map<number, OrderCurrents>();
   for (const load of loads.distorting ?? []) {
     for (const { orderH, pct, angleDeg } of injectedOrders(load)) {
       const factor = loads.factors?.find((of) => of.orderH === orderH)?.factor ?? 1;
       const a = (factor * load.fundamentalA * pct) / 100;
+      const currents = found.get(orderH) ?? { re: 0, im: 0, magnitudesA: [] };
+      found.set(orderH, currents);
       if (angleDeg === undefined) {
-        found.set(orderH, [...(found.get(orderH) ?? []), a]);
+        currents.magnitudesA.push(a);
         continue;
       }
       const angle = (angleDeg * Math.PI) / 180;
-      const sum = phasors.get(orderH) ?? { re: 0, im: 0 };
-      phasors.set(orderH, { re: sum.re + a * Math.cos(angle), im: sum.im + a * Math.sin(angle) });
+      currents.re += a * Math.cos(angle);
+      currents.im += a * Math.sin(angle);
     }
   }
-  for (const [orderH, { re, im }] of phasors) {
-    found.set(orderH, [Math.sqrt(re * re + im * im), ...(found.get(orderH) ?? [])]);
-  }
   return found;
+}
+
+/** What the loads of one bus inject at the orders present, per phase [A]; length n. */
+export interface BusInjection {
+  /** loads without angles, combined */
+  magnitudeA: Float64Array;
+  /** phasor sum of the loads with angles */
+  re: Float64Array;
+  im: Float64Array;
+}
+
+/**
+ * The currents of one bus's loads, those with angles apart, since they add to the phasors of other buses.
+ * @param loads settled loads of that bus
+ * @param present orders and exponents of the whole site
+ * @returns currents per phase [A]
+ * @source iec-tr-61000-3-6
+ */
+export function busInjection(
+  loads: Pick<Loads, 'distorting' | 'factors'>,
+  present: Pick<Excitation, 'ordersH' | 'exponent'>,
+): BusInjection {
+  const currents = currentsByOrder(loads);
+  const at = (i: number): OrderCurrents | undefined => currents.get(present.ordersH[i]!);
+  return {
+    magnitudeA: present.ordersH.map((_, i) =>
+      (at(i)?.magnitudesA ?? []).reduce((sum, a) => combine(sum, a, present.exponent[i]!), 0),
+    ),
+    re: present.ordersH.map((_, i) => at(i)?.re ?? 0),
+    im: present.ordersH.map((_, i) => at(i)?.im ?? 0),
+  };
 }
 
 /**
@@ -74,11 +110,11 @@ function currentsByOrder(loads: Loads): Map<number, number[]> {
 export function excitation(loads: Loads, nominalV: number): Excitation {
   const injected = new Map<number, number>();
   const background = new Map<number, number>();
-  for (const [orderH, magnitudesA] of currentsByOrder(loads)) {
+  for (const [orderH, { re, im, magnitudesA }] of currentsByOrder(loads)) {
     const alpha = summationExponent(orderH, loads.summation);
     injected.set(
       orderH,
-      magnitudesA.reduce((sum, a) => combine(sum, a, alpha), 0),
+      magnitudesA.reduce((sum, a) => combine(sum, a, alpha), Math.sqrt(re * re + im * im)),
     );
   }
   for (const { orderH, pct } of loads.backgroundPct ?? []) {

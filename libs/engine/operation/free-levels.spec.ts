@@ -13,7 +13,12 @@ function chosen(sizes: [number, number][], wantedKvar: number, connected: number
 }
 
 /** Every count vector, held against the rule one after the other. */
-function slowlyChosen(sizes: [number, number][], wantedKvar: number, connected: number[]): number[] {
+function slowlyChosen(
+  sizes: [number, number][],
+  wantedKvar: number,
+  connected: number[],
+  may: { free: number[]; switched: number } | null = null,
+): number[] {
   let vectors: number[][] = [[]];
   for (const [, stages] of sizes) {
     vectors = vectors.flatMap((vector) => Array.from({ length: stages + 1 }, (_, count) => [...vector, count]));
@@ -21,6 +26,10 @@ function slowlyChosen(sizes: [number, number][], wantedKvar: number, connected: 
   const level = (vector: number[]) => vector.reduce((sum, count, c) => sum + count * sizes[c]![0], 0);
   const off = (vector: number[]) => Math.abs(wantedKvar - level(vector));
   const moves = (vector: number[]) => vector.reduce((sum, count, c) => sum + Math.abs(count - connected[c]!), 0);
+  if (may !== null) {
+    const fits = (vector: number[]) => vector.every((count, c) => count - connected[c]! <= may.free[c]!);
+    vectors = vectors.filter((vector) => fits(vector) && moves(vector) <= may.switched);
+  }
   const least = Math.min(...vectors.map(off));
   const order = (a: number[], b: number[]): number =>
     moves(a) - moves(b) ||
@@ -29,7 +38,7 @@ function slowlyChosen(sizes: [number, number][], wantedKvar: number, connected: 
   return vectors.filter((vector) => off(vector) <= least + 1e-9).sort(order)[0]!;
 }
 
-describe('levels while every stage is free', () => {
+describe('the nearest levels', () => {
   it.each([
     [
       'the nearest',
@@ -116,6 +125,36 @@ describe('levels while every stage is free', () => {
         slowlyChosen(sizes, wanted, connected),
       );
     }
+  });
+
+  it(`are those of trying every count within reach, while stages wait or few may be switched (seed ${SEED})`, () => {
+    const random = chance(SEED);
+    let held = 0;
+    for (let k = 0; k < runs(500, 10_000); k++) {
+      const sizes = random
+        .oneOf([
+          [100, 50, 25],
+          [40, 20],
+          [60, 30, 15, 7.5],
+          [50, 30, 20],
+        ])
+        .map((kvar): [number, number] => [kvar, random.whole(1, 3)]);
+      const connected = sizes.map(([, stages]) => random.whole(0, stages));
+      const free = sizes.map(([, stages], c) => random.whole(0, stages - connected[c]!));
+      const switched = random.whole(1, 12);
+      const wanted = random.whole(-40, 900) * 1.25;
+      const chosenCounts = new Int32Array(sizes.length);
+      FreeLevels.of({ classes: classesOf(sizes) }, 1e-9)!.chooseReachableInto(wanted, {
+        connected: Int32Array.from(connected),
+        free: Int32Array.from(free),
+        mostSwitchings: switched,
+        chosen: chosenCounts,
+      });
+      const slow = slowlyChosen(sizes, wanted, connected, { free, switched });
+      if (slow.join() !== slowlyChosen(sizes, wanted, connected).join()) held++;
+      expect([...chosenCounts], JSON.stringify({ sizes, connected, free, switched, wanted })).toEqual(slow);
+    }
+    expect(held).toBeGreaterThan(100);
   });
 
   it('of too many counts are left to be walked', () => {

@@ -1,10 +1,14 @@
+import type { Decision } from './decide.js';
 import type { SwitchedBank } from './switched-bank.js';
 
 /** Banks with more count vectors than this are walked instead. */
 const MOST_VECTORS = 1024;
 
+/** What a decision starts from and may do. */
+type Reach = Pick<Decision, 'connected' | 'free' | 'mostSwitchings'>;
+
 /**
- * Every count vector of a bank by its level, ascending: while all stages are free the nearest level is looked up instead of
+ * Every count vector of a bank by its level, ascending: the nearest level that can be reached is looked up instead of
  * walked to. The choice is that of `nearestLevel`: least |d|, then fewest switchings, then the lower level, then the
  * lexicographically smallest, largest class first.
  * @source method-controller
@@ -57,7 +61,61 @@ export class FreeLevels {
   }
 
   /**
-   * Chooses.
+   * Chooses among the vectors that can be reached: no class takes in more than is free, and all switch no more than they
+   * may. The present vector is always one of them.
+   * @param wantedKvar what the switchable stages should come to [kvar]
+   * @param decision counts at present, free stages, most switchings; receives the counts
+   */
+  chooseReachableInto(
+    wantedKvar: number,
+    { connected, free, mostSwitchings, chosen }: Reach & Pick<Decision, 'chosen'>,
+  ): void {
+    const levels = this.#levelKvar;
+    const reach = { connected, free, mostSwitchings };
+    const above = this.#firstFrom(wantedKvar);
+    const most = this.#leastOff(wantedKvar, above, reach) + this.#tolerance;
+    let from = above;
+    while (from > 0 && wantedKvar - levels[from - 1]! <= most) from--;
+    let best = -1;
+    let fewest = 0;
+    for (let v = from; v < levels.length && levels[v]! - wantedKvar <= most; v++) {
+      const moves = this.#movesWithin(v, reach);
+      if (moves > mostSwitchings) continue;
+      if (best >= 0 && (moves > fewest || (moves === fewest && !this.#before(v, best)))) continue;
+      best = v;
+      fewest = moves;
+    }
+    for (let c = 0; c < this.#classes; c++) chosen[c] = this.#counts[best * this.#classes + c]!;
+  }
+
+  // Outwards from what is wanted until a level is within reach.
+  #leastOff(wantedKvar: number, firstAbove: number, reach: Reach): number {
+    const levels = this.#levelKvar;
+    let above = firstAbove;
+    let below = firstAbove - 1;
+    while (above < levels.length || below >= 0) {
+      const offAbove = above < levels.length ? levels[above]! - wantedKvar : Number.POSITIVE_INFINITY;
+      const offBelow = below >= 0 ? wantedKvar - levels[below]! : Number.POSITIVE_INFINITY;
+      const nearest = offBelow <= offAbove ? below-- : above++;
+      if (this.#movesWithin(nearest, reach) <= reach.mostSwitchings) return Math.min(offAbove, offBelow);
+    }
+    throw new Error('the present level is within reach');
+  }
+
+  // Infinite where more of a class would be taken in than is free.
+  #movesWithin(v: number, { connected, free }: Reach): number {
+    let moves = 0;
+    const first = v * this.#classes;
+    for (let c = 0; c < this.#classes; c++) {
+      const apart = this.#counts[first + c]! - connected[c]!;
+      if (apart > free[c]!) return Number.POSITIVE_INFINITY;
+      moves += apart < 0 ? -apart : apart;
+    }
+    return moves;
+  }
+
+  /**
+   * Chooses where every stage is free.
    * @param chosen receives the counts, largest class first
    * @param wantedKvar what the switchable stages should come to [kvar]
    * @param connected counts at present

@@ -62,10 +62,12 @@ export class NearestLevel {
       chosen[0] = this.#nearestOfOneSize();
       return;
     }
-    if (voltageScale === 1 && this.#allAreFree()) {
+    if (voltageScale === 1) {
       if (this.#levels === undefined) this.#levels = FreeLevels.of(this.#bank, this.#tolerance);
       if (this.#levels !== null) {
-        this.#levels.chooseInto(chosen, this.#decision.wantedKvar - this.#fixedKvar, connected);
+        const wantedKvar = this.#decision.wantedKvar - this.#fixedKvar;
+        if (this.#allAreFree()) this.#levels.chooseInto(chosen, wantedKvar, connected);
+        else this.#levels.chooseReachableInto(wantedKvar, this.#decision);
         return;
       }
     }

@@ -27,7 +27,9 @@ export interface CellSize {
   leastKvar: number;
   /** what the controller wants connected, length n [kvar]; null where nothing is known of it */
   wantedKvar: Float64Array | null;
-  reach: ControlReach;
+  /** least wanted of each interval and of those before it in which a stage may be waiting still, length n [kvar] */
+  leastWantedKvar: Float64Array | null;
+  reach: Pick<ControlReach, 'aboveKvar' | 'belowKvar' | 'paceKvar'>;
 }
 
 /** Bounds the bills of banks that are known by their size alone. */
@@ -98,16 +100,21 @@ export class CellBounds {
     return { leastBill, ...this.#monthSums(size) };
   }
 
-  #connectedInto({ mostKvar, leastKvar, wantedKvar, reach }: CellSize): void {
+  #connectedInto(size: CellSize): void {
     const { voltageScale } = this.#study;
     const [least, most] = [this.#leastConnectedKvar, this.#mostConnectedKvar];
-    if (wantedKvar === null) {
+    const { mostKvar, leastKvar, wantedKvar, leastWantedKvar, reach } = size;
+    if (wantedKvar === null || leastWantedKvar === null) {
       least.fill(0);
       most.fill(mostKvar);
     } else {
+      const { aboveKvar, belowKvar, paceKvar } = reach;
+      let [low, high] = [0, 0];
       for (let i = 0; i < most.length; i++) {
-        most[i] = Math.max(0, Math.min(mostKvar, wantedKvar[i]! + reach.aboveKvar));
-        least[i] = Math.max(0, Math.min(leastKvar, wantedKvar[i]! - reach.belowKvar));
+        high = Math.max(0, Math.min(mostKvar, Math.max(wantedKvar[i]! + aboveKvar, high - paceKvar)));
+        low = Math.max(0, Math.min(leastKvar, leastWantedKvar[i]! - belowKvar, low + paceKvar));
+        most[i] = high;
+        least[i] = low;
       }
     }
     // a reach is finite only where no voltage scales the levels

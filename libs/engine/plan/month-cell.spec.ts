@@ -9,6 +9,7 @@ import type { Tariff } from '../money/papers.js';
 import { prepareTariff } from '../money/prepare-tariff.js';
 import { UTC_TABLE } from '../record/zone-table.js';
 import { type CellSize, CellBounds } from './bound-cell.js';
+import { leastOfLast } from './least-of-last.js';
 import { MonthCells } from './month-cell.js';
 import type { Site } from './site.js';
 import { controllerView, studySite } from './study.js';
@@ -42,10 +43,14 @@ function madeSize(random: Chance, wantedKvar: Float64Array): CellSize {
   const leastKvar = mostKvar * random.between(0.7, 1);
   const infinite = Number.POSITIVE_INFINITY;
   if (random.next() < 0.4) {
-    return { mostKvar, leastKvar, wantedKvar: null, reach: { aboveKvar: infinite, belowKvar: infinite } };
+    const reach = { aboveKvar: infinite, belowKvar: infinite, paceKvar: infinite };
+    return { mostKvar, leastKvar, wantedKvar: null, leastWantedKvar: null, reach };
   }
   const aboveKvar = random.between(5, 60);
-  return { mostKvar, leastKvar, wantedKvar, reach: { aboveKvar, belowKvar: random.oneOf([aboveKvar, infinite]) } };
+  const leastWantedKvar = leastOfLast(wantedKvar, random.whole(0, 3));
+  const paceKvar = random.oneOf([infinite, random.between(5, 60)]);
+  const reach = { aboveKvar, belowKvar: random.oneOf([aboveKvar, infinite]), paceKvar };
+  return { mostKvar, leastKvar, wantedKvar, leastWantedKvar, reach };
 }
 
 describe(`bounds added up month by month (seed ${SEED})`, () => {

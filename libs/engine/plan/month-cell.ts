@@ -87,8 +87,8 @@ export class MonthCells {
     const leastMovesKvar: number[][] = [];
     const isHeld = size.wantedKvar !== null && Number.isFinite(size.reach.belowKvar);
     let mostLowestFactor = 1;
-    if (size.wantedKvar === null) this.#sizeInto(size.mostKvar);
-    else this.#controlledInto(size, size.wantedKvar);
+    if (size.wantedKvar === null || size.leastWantedKvar === null) this.#sizeInto(size.mostKvar);
+    else this.#controlledInto(size, size.wantedKvar, size.leastWantedKvar);
     const { least, leastLagging } = this.#wholeSums;
     for (const [m, { from, end }] of months.entries()) {
       leastKvarh[m] = least[m]! * hours;
@@ -143,19 +143,27 @@ export class MonthCells {
   }
 
   // biome-ignore lint/complexity/noExcessiveCognitiveComplexity: a kernel; its sums stay in locals
-  #controlledInto({ mostKvar, leastKvar, reach }: CellSize, wantedKvar: Float64Array): void {
+  #controlledInto(
+    { mostKvar, leastKvar, reach }: CellSize,
+    wantedKvar: Float64Array,
+    leastWantedKvar: Float64Array,
+  ): void {
     const { laggingKvar } = this.#study.record;
-    const { aboveKvar, belowKvar } = reach;
+    const { aboveKvar, belowKvar, paceKvar } = reach;
+    let [most, least] = [0, 0];
     const [leastColumn, mostColumn] = [this.#leastKvar, this.#mostKvar];
     const sums = this.#wholeSums;
     for (const [m, { from, end }] of this.#ranged.prepared.calendar.months.entries()) {
       let [leastLagging, mostLagging, mostSum, leastSum] = [0, 0, 0, 0];
       for (let i = from; i < end; i++) {
-        const wanted = wantedKvar[i]!;
-        let most = wanted + aboveKvar;
+        const slowest = most - paceKvar;
+        most = wantedKvar[i]! + aboveKvar;
+        if (most < slowest) most = slowest;
         if (most > mostKvar) most = mostKvar;
         if (most < 0) most = 0;
-        let least = wanted - belowKvar;
+        const quickest = least + paceKvar;
+        least = leastWantedKvar[i]! - belowKvar;
+        if (least > quickest) least = quickest;
         if (least > leastKvar) least = leastKvar;
         if (least < 0) least = 0;
         mostColumn[i] = most;

@@ -107,4 +107,27 @@ describe('a declared absence', () => {
     expect(codes).toContain('loads.distorting.none');
     expect(codes).toContain('loads.backgroundPct.none');
   });
+
+  it('is what a list of loads that are all off comes to; one that runs does not', () => {
+    const codesOf = (amperes: number[]) => {
+      const distorting = amperes.map((fundamentalA, k) => ({
+        name: `${k}`,
+        fundamentalA,
+        spectrum: 'six-pulse' as const,
+      }));
+      return settleSite({ ...bare, loads: { distorting } }, null).assumptions.map(({ code }) => code);
+    };
+    expect(codesOf([0, 0])).toContain('loads.distorting.none');
+    expect(codesOf([0, 1])).not.toContain('loads.distorting.none');
+  });
+});
+
+describe('angles of currents', () => {
+  it('are told of where two loads have them, since they may cancel', () => {
+    const angled = (name: string) => ({ name, fundamentalA: 9, orders: [{ orderH: 5, pct: 30, angleDeg: 0 }] });
+    const codesOf = (names: string[]) =>
+      settleSite({ ...bare, loads: { distorting: names.map(angled) } }, null).assumptions.map(({ code }) => code);
+    expect(codesOf(['a', 'b'])).toContain('loads.angles');
+    expect(codesOf(['a'])).not.toContain('loads.angles');
+  });
 });

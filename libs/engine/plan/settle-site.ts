@@ -191,8 +191,13 @@ function settleLoads(site: Site, record: LoadRecord | null, defaults: Defaults):
   // A stated minimum above the mean is the user's own, and the maximum can't be less.
   const most = Math.max(meanKw, loads?.dampingKw?.min ?? 0);
   const max = defaults.take(loads?.dampingKw?.max, most, 'loads.dampingKw.max', 'kW');
-  if (loads?.distorting?.length === 0) defaults.note('loads.distorting.none', 'loads.distorting', {});
+  // A list of loads that are all off declares what an empty one does.
+  const none = loads?.distorting?.every(({ fundamentalA }) => fundamentalA === 0);
+  if (none) defaults.note('loads.distorting.none', 'loads.distorting', {});
   if (loads?.backgroundPct?.length === 0) defaults.note('loads.backgroundPct.none', 'loads.backgroundPct', {});
+  const angled =
+    loads?.distorting?.filter(({ orders }) => orders?.some(({ angleDeg }) => angleDeg !== undefined)) ?? [];
+  if (angled.length > 1) defaults.note('loads.angles', 'loads.distorting', { count: angled.length });
   return {
     motorSharePct: defaults.take(loads?.motorSharePct, 60, 'loads.motorSharePct', '%'),
     distorting: loads?.distorting ?? null,

@@ -6,15 +6,17 @@ import { controlReach } from '../operation/control-reach.js';
 import type { ControllerView } from '../operation/controller-view.js';
 import { CellBounds, type CellSize } from './bound-cell.js';
 import { boundRest, type WorthGround } from './candidate-worth.js';
+import { leastOfLast } from './least-of-last.js';
 import { MonthCells } from './month-cell.js';
 import type { Candidate, SharedBound } from './search.js';
 import type { Study } from './study.js';
 
 /** Totals and reaches within these ratios share their bounds. */
 const RATIO = { about: 1.2, size: 1.05, reach: 1.3 } as const;
-/** Keys of bounds: room for steps of size and of reach, each from −600 on. */
+/** Keys of bounds: room for steps of size, of reach and of pace, each from −600 on, and for the intervals of a wait. */
 const STEPS = 2000;
 const STEP_ZERO = 600;
+const WAITS = 1000;
 
 /** Bounds by size and controller; whatever many candidates ask for is formed once. */
 export class SharedBounds {
@@ -23,6 +25,8 @@ export class SharedBounds {
   readonly #worth: WorthGround;
   readonly #cells: Pick<CellBounds, 'cell'>;
   readonly #bounds = new Map<number, SharedBound>();
+  /** by the columns they are taken from, then by the intervals looked back */
+  readonly #leastWanted = new Map<Float64Array, Map<number, Float64Array>>();
 
   /**
    * @param ground what every candidate is valued with
@@ -45,7 +49,8 @@ export class SharedBounds {
    */
   bySize({ totalKvar }: Build, width: 'about' | 'size'): SharedBound {
     const step = stepOf(totalKvar, RATIO[width]);
-    return this.#bound(keyOf(step, width === 'about' ? 0 : 1, 0), () => sizeOf(totalKvar, width));
+    const key = keyOf(step, width === 'about' ? 0 : 1, 0) * WAITS * STEPS;
+    return this.#bound(key, () => sizeOf(totalKvar, width));
   }
 
   /**
@@ -64,13 +69,30 @@ export class SharedBounds {
     const reach = controlReach({ ...build, stageCount: build.stages }, control, view);
     if (!Number.isFinite(reach.aboveKvar)) return this.bySize(build, 'size');
     const near = stepOf(reach.aboveKvar, RATIO.reach);
+    const pace = Number.isFinite(reach.paceKvar) ? Math.floor(Math.log(reach.paceKvar) / Math.log(RATIO.reach)) : null;
     const held = Number.isFinite(reach.belowKvar) ? 0 : 1;
-    const key = keyOf(stepOf(build.totalKvar, RATIO.size), 2 + 2 * candidate.setPoint + held, near);
+    const byReach = keyOf(stepOf(build.totalKvar, RATIO.size), 2 + 2 * candidate.setPoint + held, near);
+    const key = (byReach * WAITS + reach.waitIntervals) * STEPS + (pace === null ? 0 : pace + STEP_ZERO);
     return this.#bound(key, () => {
       const kvar = RATIO.reach ** near * (1 + 1e-9);
-      const wide = { aboveKvar: kvar, belowKvar: held === 0 ? kvar : Number.POSITIVE_INFINITY };
-      return { ...sizeOf(build.totalKvar, 'size'), wantedKvar: view.wantedKvar, reach: wide };
+      const wide = {
+        aboveKvar: kvar,
+        belowKvar: held === 0 ? kvar : Number.POSITIVE_INFINITY,
+        paceKvar: pace === null ? Number.POSITIVE_INFINITY : RATIO.reach ** pace * (1 - 1e-9),
+      };
+      const { wantedKvar } = view;
+      const leastWantedKvar = this.#leastOf(wantedKvar, reach.waitIntervals);
+      return { ...sizeOf(build.totalKvar, 'size'), wantedKvar, leastWantedKvar, reach: wide };
     });
+  }
+
+  #leastOf(wantedKvar: Float64Array, before: number): Float64Array {
+    if (before === 0) return wantedKvar;
+    const known = this.#leastWanted.get(wantedKvar) ?? new Map<number, Float64Array>();
+    this.#leastWanted.set(wantedKvar, known);
+    const made = known.get(before) ?? leastOfLast(wantedKvar, before);
+    known.set(before, made);
+    return made;
   }
 
   #bound(key: number, size: () => CellSize): SharedBound {
@@ -95,8 +117,10 @@ function stepOf(kvar: number, ratio: number): number {
 function sizeOf(totalKvar: number, width: 'about' | 'size'): CellSize {
   const ratio = RATIO[width];
   const step = stepOf(totalKvar, ratio);
-  const unheld = { aboveKvar: Number.POSITIVE_INFINITY, belowKvar: Number.POSITIVE_INFINITY };
+  const infinite = Number.POSITIVE_INFINITY;
+  const unheld = { aboveKvar: infinite, belowKvar: infinite, paceKvar: infinite };
   // a little room for the powers of the ratio
   const mostKvar = Math.max(totalKvar, ratio ** step * (1 + 1e-9));
-  return { mostKvar, leastKvar: ratio ** (step - 1) * (1 - 1e-9), wantedKvar: null, reach: unheld };
+  const leastKvar = ratio ** (step - 1) * (1 - 1e-9);
+  return { mostKvar, leastKvar, wantedKvar: null, leastWantedKvar: null, reach: unheld };
 }

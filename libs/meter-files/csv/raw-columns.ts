@@ -1,3 +1,4 @@
+import { intervalsAnHour } from '../record/intervals-an-hour.js';
 import { RowSet } from '../row-set.js';
 import type { QuantityColumn } from './column-choice.js';
 import type { CsvFile, CsvMeaning, ReadRows } from './csv-meaning.js';
@@ -77,8 +78,9 @@ export function valuesUnder(read: Pick<ReadRows, 'rows' | 'mark'>, decimal: Deci
  * @param intervalS length of an interval [s]
  */
 export function inBase({ values, unit }: RawColumn, intervalS: number): Float64Array {
-  const times = unit.times * (unit.energy ? 3600 : 1);
-  const over = unit.over * (unit.energy ? intervalS : 1);
+  const hour = unit.energy ? intervalsAnHour(intervalS) : { times: 1, over: 1 };
+  const times = unit.times * hour.times;
+  const over = unit.over * hour.over;
   return times === 1 && over === 1 ? values : values.map((value) => (value * times) / over);
 }
 

@@ -28,6 +28,8 @@ export interface Stream {
 export interface StreamDay {
   /** days since 1970-01-01 */
   day: number;
+  /** of the values, by the 200 record before them */
+  unit: ReadUnit;
   /** NaN where the quality flag says there is no value */
   values: Float64Array;
   row: number;
@@ -98,7 +100,7 @@ export function readDay(
     return null;
   }
   const values = readValues(texts.slice(2, 2 + count), row, refuse);
-  const parts: StreamDay = { day, values, row, substituted: 0, unstated: 0 };
+  const parts: StreamDay = { day, unit: stream.unit, values, row, substituted: 0, unstated: 0 };
   if (quality.startsWith('N')) values.fill(Number.NaN);
   if (/^[SFE]/.test(quality)) parts.substituted = count;
   if (quality === '' || quality.startsWith('V')) parts.unstated = count;

@@ -179,7 +179,8 @@ class Nem12Reader {
     const stream = this.#stream;
     this.#day = null;
     if (day === null || stream === null) return;
-    const key = `${stream.meter}\n${stream.suffix}\n${stream.minutes}\n${stream.unit.times}/${stream.unit.over}/${stream.unit.energy}`;
+    // in whatever unit a later 200 record gives it: a stream is one, and its days count once
+    const key = `${stream.meter}\n${stream.suffix}\n${stream.minutes}`;
     const known = this.streams.get(key) ?? new StreamDays(stream);
     this.streams.set(key, known);
     known.add(day);

@@ -2,7 +2,7 @@ import { zoneTable } from '#libs/contract/time-zone.js';
 import { InputProblem, type Problem, type Remark, type ZoneTable } from '#libs/engine/index.js';
 import { note } from '../note.js';
 import { buildColumns, type Quantity, type QuantitySource, type RecordColumns } from '../record/build-columns.js';
-import type { StreamDays } from './stream-days.js';
+import { kiloValues, type StreamDays } from './stream-days.js';
 
 const DAY_S = 86_400;
 /** The market's time, without daylight saving [s]. */
@@ -98,24 +98,24 @@ function sourcesOf(
   for (const stream of streams) {
     const { quantity, unit } = stream.stream;
     if (quantity === null) continue;
+    const known = sources.get(quantity);
+    const energy = known?.energy ?? unit.energy;
     const values = new Float64Array(days.length * count).fill(Number.NaN);
     days.forEach((day, index) => {
       const version = stream.at(day, keep);
-      if (version !== undefined) values.set(version.values, index * count);
+      if (version === undefined) return;
+      if (version.unit.energy !== energy) refuseMixedUnits(version.row);
+      values.set(kiloValues(version), index * count);
     });
-    const known = sources.get(quantity);
-    const scaled = values.map((value) => (value * unit.times) / unit.over);
-    if (known === undefined)
-      sources.set(quantity, { quantity, values: scaled, energy: unit.energy, times: 1, over: 1, column: 0 });
-    else if (known.energy !== unit.energy) refuseMixedUnits(stream.stream.row);
-    else known.values = known.values.map((value, i) => value + scaled[i]!);
+    if (known === undefined) sources.set(quantity, { quantity, values, energy, times: 1, over: 1, column: 0 });
+    else known.values = known.values.map((value, i) => value + values[i]!);
   }
   return [...sources.values()];
 }
 
 function refuseMixedUnits(row: number): never {
-  const expected = 'streams of one quantity all as energies, or all as powers';
-  throw new InputProblem([{ code: 'wrong-unit', row, column: 8, expected, found: 'both' }]);
+  const expected = 'days of one quantity all as energies, or all as powers';
+  throw new InputProblem([{ code: 'wrong-unit', row, expected, found: 'both' }]);
 }
 
 function addedNotes(streams: StreamDays[]): Remark[] {

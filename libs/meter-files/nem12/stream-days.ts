@@ -31,7 +31,7 @@ export class StreamDays {
     if (known === undefined) {
       if ((this.days.size + 1) * day.values.length > MAX_INTERVALS) refuseTooLong(day.row);
       this.days.set(day.day, { first: day, last: day });
-    } else if (sameValues(known.last.values, day.values)) {
+    } else if (sameValues(known.last, day)) {
       this.duplicates++;
     } else {
       this.conflicts++;
@@ -50,6 +50,16 @@ export class StreamDays {
   }
 }
 
-function sameValues(a: Float64Array, b: Float64Array): boolean {
-  return a.length === b.length && a.every((value, i) => value === b[i] || (Number.isNaN(value) && Number.isNaN(b[i]!)));
+/**
+ * The values of a day in kW, kvar, kWh or kvarh.
+ * @param day with its unit
+ */
+export function kiloValues({ values, unit: { times, over } }: StreamDay): Float64Array {
+  return values.map((value) => (value * times) / over);
+}
+
+function sameValues(one: StreamDay, other: StreamDay): boolean {
+  const [a, b] = [kiloValues(one), kiloValues(other)];
+  if (one.unit.energy !== other.unit.energy || a.length !== b.length) return false;
+  return a.every((value, i) => value === b[i] || (Number.isNaN(value) && Number.isNaN(b[i]!)));
 }

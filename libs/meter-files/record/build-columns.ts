@@ -1,4 +1,5 @@
 import { InputProblem, type Problem } from '#libs/engine/index.js';
+import { intervalsAnHour } from './intervals-an-hour.js';
 
 /** Quantities a record is made of. */
 export const QUANTITIES = [
@@ -181,11 +182,9 @@ function taken(rows: OrderedRows, valid: Int32Array, source: QuantitySource | un
   const own = isOwn(whole, source);
   // what is exported is written to
   if (times === 1 && over === 1 && !energy && (own || quantity !== 'exported')) return whole;
-  // kW = kWh · 3600 ÷ intervalS
-  const hourS = energy ? 3600 : 1;
-  const lengthS = energy ? intervalS : 1;
+  const hour = energy ? intervalsAnHour(intervalS) : { times: 1, over: 1 };
   const column = own ? whole : freshOf(rows)(valid.length);
-  for (let i = 0; i < column.length; i++) column[i] = (((whole[i]! * times) / over) * hourS) / lengthS;
+  for (let i = 0; i < column.length; i++) column[i] = (((whole[i]! * times) / over) * hour.times) / hour.over;
   return column;
 }
 

@@ -1,6 +1,7 @@
 import sax from 'sax';
 import { InputProblem } from '#libs/engine/index.js';
 import { damaged } from '../sheet/read-sheet-text.js';
+import { forbiddenAt, LONGEST_FORBIDDEN } from '../xml/forbidden-xml.js';
 
 /** Hears the elements of a part; names come without their prefix. */
 export interface XmlListener {
@@ -12,9 +13,6 @@ export interface XmlListener {
 const MOST_DEPTH = 64;
 /** A part that is read so far without an element beginning or ending is no workbook's [characters]. */
 const LONGEST_TAG = 262_144;
-const FORBIDDEN = /<!(?:DOCTYPE|ENTITY)/i;
-/** Longest beginning of a forbidden word that may stand at the end of a chunk. */
-const CARRIED = 9;
 
 /**
  * Reads a part as XML, chunk by chunk. Declarations of document types and entities are refused before they are read; depth,
@@ -56,10 +54,13 @@ export class XmlPart {
   }
 
   #parse(text: string): void {
-    if (FORBIDDEN.test(this.#carried + text)) {
+    const held = this.#carried + text;
+    const at = forbiddenAt(held);
+    if (at >= 0 && held[at] === '<') {
       throw damaged(this.#name, 'XML without a document type or entities of its own', '<!DOCTYPE or <!ENTITY');
     }
-    this.#carried = (this.#carried + text).slice(-CARRIED);
+    if (at >= 0) throw damaged(this.#name, 'characters of XML', JSON.stringify(held[at]));
+    this.#carried = held.slice(1 - LONGEST_FORBIDDEN);
     this.#sinceTag += text.length;
     this.#parser.write(text);
     if (this.#sinceTag > LONGEST_TAG) this.#refuse(`${LONGEST_TAG} characters of one element`);

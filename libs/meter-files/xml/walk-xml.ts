@@ -1,6 +1,7 @@
 import sax, { type SAXParser } from 'sax';
 import { shown } from '#libs/contract/shown.js';
 import { InputProblem, type Problem } from '#libs/engine/index.js';
+import { forbiddenAt, LONGEST_FORBIDDEN } from './forbidden-xml.js';
 import { XmlText } from './xml-text.js';
 
 /** How large a file may be in every way but its length. */
@@ -38,9 +39,6 @@ export interface XmlVisitor {
   closed(element: XmlElement): void;
 }
 
-/** Nothing of a document type is wanted: entities can grow without end, and name other files. */
-const DECLARATION = /<!(?:DOCTYPE|ENTITY|ELEMENT|ATTLIST|NOTATION)/i;
-const LONGEST_DECLARATION = '<!NOTATION'.length;
 /** The parser looks at the length of what it holds after each piece. */
 const PIECE = 16_384;
 const NONE: Readonly<Record<string, string>> = {};
@@ -102,15 +100,17 @@ class XmlWalk {
 
   take(piece: string): void {
     const text = this.#held + piece;
-    const at = text.search(DECLARATION);
+    const at = forbiddenAt(text);
     if (at >= 0) {
       this.#write(text.slice(0, at));
-      const found = shown(text.slice(at, at + 20).split(/\s/)[0]);
-      this.#refuse({ code: 'unreadable', expected: 'XML without document type or entities', found });
+      const word = text[at] === '<';
+      const found = shown(word ? text.slice(at, at + 20).split(/\s/)[0] : text[at]);
+      const expected = word ? 'XML without document type or entities' : 'characters of XML';
+      this.#refuse({ code: 'unreadable', expected, found });
     }
     // the beginning of a declaration may end with the piece
     const last = text.lastIndexOf('<');
-    const cut = last >= 0 && text.length - last < LONGEST_DECLARATION ? last : text.length;
+    const cut = last >= 0 && text.length - last < LONGEST_FORBIDDEN ? last : text.length;
     this.#held = text.slice(cut);
     this.#write(text.slice(0, cut));
   }

@@ -484,6 +484,18 @@ describe('NEM12', () => {
       },
     ],
     [
+      'nem12-unit-changes',
+      'a stream that goes on in Wh is the same stream: its day twice counts once',
+      {
+        begin: '2024-05-05T14:00',
+        intervalS: 1800,
+        kw: [...ramp(20, 1), ...ramp(20, 1)],
+        lagging: Array(96).fill(10),
+        duplicates: 1,
+        notes: ['duplicates-dropped'],
+      },
+    ],
+    [
       'nem12-day-twice',
       'a day twice with the same values counts once',
       {

@@ -66,6 +66,20 @@ describe('ESPI feeds', () => {
       // 125 tens of varh in a quarter of an hour are 5 kvar
       { kw: [40.5, 41.5, 39], lagging: [20, 24, 0], leading: [0, 0, 5] },
     ],
+    [
+      'espi-leading-in-var',
+      'with lagging energy in varh and leading power in var, each read in its own form',
+      { kw: [40.5, 41.5, 39, 38], lagging: [20, 24, 0, 18], leading: [0, 0, 5, 0] },
+    ],
+    [
+      'espi-leading-by-hour',
+      'with leading energy of another length of interval, left out by name',
+      {
+        kw: [40.5, 41.5, 39, 38],
+        lagging: [20, 24, 0, 18],
+        notes: ['channels-left-out', 'leading-left-out'],
+      },
+    ],
     ['espi-without-links', 'without links are joined by order', { ...TWO, notes: ['espi-joined-by-order'] }],
     ['espi-without-times', 'without times take them from the place in the block', PLAIN],
     [

@@ -1,0 +1,18 @@
+/** Nothing of a document type is wanted: entities can grow without end, and name other files. */
+const DECLARATION = /<!(?:DOCTYPE|ENTITY|ELEMENT|ATTLIST|NOTATION)/i;
+/** Characters that are none of XML (XML 1.0, 2.2), behind which a word may hide from whoever reads it. */
+// biome-ignore lint/suspicious/noControlCharactersInRegex: these are the characters that are refused
+const CHARACTER = /[\0-\x08\x0b\x0c\x0e-\x1f\ufffe\uffff]/;
+
+/** Longest forbidden word, so much of which may stand at the end of a piece [characters]. */
+export const LONGEST_FORBIDDEN = '<!NOTATION'.length;
+
+/**
+ * Where a text holds what no file may hold: a declaration of a document type or entity, or a character that is none of XML.
+ * @param text a piece of a file
+ * @returns the first place, −1 where there is none
+ */
+export function forbiddenAt(text: string): number {
+  const [word, character] = [text.search(DECLARATION), text.search(CHARACTER)];
+  return word < 0 || character < 0 ? Math.max(word, character) : Math.min(word, character);
+}
