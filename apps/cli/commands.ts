@@ -8,7 +8,7 @@ const METER_LISTS = { extend: 'METER-FILE' };
 
 const METER_DETAILS = `  --extend FILE      a further meter file that extends or corrects the record, read by the same options; may stand
                      several times, and each is laid over what stands before it; "overlap" in the map says which
-                     counts where one disagrees: "earlier" or "later"
+                     counts where one disagrees: "earlier" or "later", or a list with one for each FILE
   --format FORMAT    format of the meter file, where it is not recognised by itself
   --map FILE         JSON: columns, separator, decimal mark, what stamps mark, repairs; also an answer to a question
   --time-zone ZONE   zone of local stamps: "Europe/Dublin", "UTC", "+10:00"

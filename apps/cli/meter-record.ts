@@ -1,4 +1,3 @@
-import type { MeterMap } from '#libs/contract/meter-map.js';
 import { isTimeZone } from '#libs/contract/time-zone.js';
 import { InputProblem } from '#libs/engine/index.js';
 import { FORMATS } from '#libs/meter-files/formats.js';
@@ -7,7 +6,8 @@ import { readMeterFile } from '#libs/meter-files/read-meter-file.js';
 import { extendRecord } from '#libs/meter-files/record/extend-record.js';
 import type { CommandLine } from './command.js';
 import { usage } from './command-line.js';
-import { openInput, readJson } from './input-file.js';
+import { openInput } from './input-file.js';
+import { readMapFile } from './map-file.js';
 import { say } from './output.js';
 import { withProgress } from './reading-progress.js';
 import { inFile } from './refused-file.js';
@@ -22,7 +22,9 @@ import { inFile } from './refused-file.js';
 export async function readMeterRecord(line: CommandLine, path: string, siteTimeZone?: string): Promise<MeterReading> {
   checkOptions(line);
   const mapPath = line.values.get('map');
-  const map = mapPath === undefined ? undefined : await inFile(mapPath, () => mapIn(mapPath));
+  const files = line.lists.get('extend') ?? [];
+  const said = mapPath === undefined ? null : await inFile(mapPath, () => readMapFile(mapPath, files.length));
+  const map = said?.map;
   const timeZone = line.values.get('time-zone');
   const options: ReadOptions = {
     ...present('format', line.values.get('format')),
@@ -31,22 +33,16 @@ export async function readMeterRecord(line: CommandLine, path: string, siteTimeZ
     ...present('siteTimeZone', siteTimeZone),
   };
   let reading = await readOne(path, options);
-  for (const further of line.lists.get('extend') ?? []) {
+  for (const [k, further] of files.entries()) {
     const later = await readOne(further, options);
     const zone = siteTimeZone ?? timeZone ?? map?.timeZone ?? 'UTC';
     const extended = await inFile(further, async () =>
-      extendRecord(reading, later, { ...present('map', map), timeZone: zone }),
+      extendRecord(reading, later, { map: { ...map, ...present('overlap', said?.overlaps?.[k]) }, timeZone: zone }),
     );
     if (extended === reading) say(`${further} adds nothing to the record`);
     reading = extended;
   }
   return reading;
-}
-
-/** The checks of a map are loaded where there is one: they take up more memory than the rest of the reader. */
-async function mapIn(path: string): Promise<MeterMap> {
-  const { readMeterMap } = await import('#libs/contract/meter-map-schema.js');
-  return readMeterMap(await readJson(path));
 }
 
 function readOne(path: string, options: ReadOptions): Promise<MeterReading> {

@@ -44,7 +44,13 @@ describe('an address', () => {
   });
 
   it('that leads nowhere says so, rather than opening something else', () => {
-    for (const hash of ['#/elsewhere', '#/sites/4197cbe0/bank/more', '#/sites/4197cbe0/wiring', '#/sites']) {
+    for (const hash of [
+      '#/elsewhere',
+      '#/papers/2',
+      '#/sites/4197cbe0/bank/more',
+      '#/sites/4197cbe0/wiring',
+      '#/sites',
+    ]) {
       expect(readAddress(hash).page).toBe('unknown');
     }
   });

@@ -7,6 +7,7 @@ export type Station = (typeof STATIONS)[number];
 /** Where the reader is: what stands behind the # of the address. */
 export type Address =
   | { page: 'sites' }
+  | { page: 'papers' }
   | { page: 'site'; siteId: string; station: Station; field: string | null; figure: string | null }
   | { page: 'survey'; siteId: string }
   | { page: 'again'; siteId: string; revision: number | null }
@@ -16,6 +17,7 @@ export type Address =
 export function readAddress(hash: string): Address {
   const [path = '', search = ''] = hash.replace(/^#?\/?/, '').split('?');
   if (path === '') return { page: 'sites' };
+  if (path === 'papers') return { page: 'papers' };
   const [first, siteId, station = 'bank', ...rest] = path.split('/');
   if (first !== 'sites' || siteId === undefined || rest.length > 0) return { page: 'unknown', asked: path };
   if (station === 'survey') return { page: 'survey', siteId };

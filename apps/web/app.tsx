@@ -10,12 +10,20 @@ const SurveySheet = lazy(() =>
 
 const AgainPage = lazy(() => import('./again/again-page.js').then(({ AgainPage: page }) => ({ default: page })));
 
+const PapersPage = lazy(() => import('./papers/papers-page.js').then(({ PapersPage: page }) => ({ default: page })));
+
 /** The page: the list of sites, one site, or a word that nothing is here. */
 export function App() {
   const address = useAddress();
   switch (address.page) {
     case 'sites':
       return <SitesPage />;
+    case 'papers':
+      return (
+        <Suspense>
+          <PapersPage />
+        </Suspense>
+      );
     case 'site':
       return <SitePage key={address.siteId} address={address} />;
     case 'survey':

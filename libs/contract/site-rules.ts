@@ -59,6 +59,12 @@ function supplyRules(site: Readable): RuleBreach[] {
       unit: 'MVA',
     });
   }
+  const rippleHz = numberAt(site, 'supply', 'rippleHz');
+  const frequencyHz = numberAt(site, 'frequencyHz');
+  if (rippleHz <= frequencyHz) {
+    const expected = `more than frequencyHz, ${frequencyHz}`;
+    breaches.push({ code: 'out-of-range', path: ['supply', 'rippleHz'], expected, found: `${rippleHz}`, unit: 'Hz' });
+  }
   const count = listAt(site, 'supply', 'transformers').length;
   const meteredAt = partAt(site, 'meteredAt');
   if (count > 0 && meteredAt === undefined) {

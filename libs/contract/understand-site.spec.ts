@@ -216,6 +216,7 @@ const refused: [why: string, json: unknown, path: string, code: string][] = [
     'loads.measured.currentA[1].orderH',
     'inconsistent',
   ],
+  ['a ripple signal at the mains frequency', siteWith({ ...mva, rippleHz: 50 }), 'supply.rippleHz', 'out-of-range'],
   [
     'a current transformer without a ratio',
     siteWith(mva, { control: { currentTransformer: { ratioPrimaryA: 1000 } } }),

@@ -74,6 +74,7 @@ export * from './network/network-states.js';
 export * from './network/nodal-case.js';
 export * from './network/nodal-impedance.js';
 export * from './network/peaks.js';
+export * from './network/ripple-share.js';
 export * from './network/scan-into.js';
 export * from './network/settle-topology.js';
 export * from './network/spectra.js';

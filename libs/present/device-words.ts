@@ -66,7 +66,7 @@ const WORDS: Record<DeviceName, { device: string; met: string; need: string }> =
   'stage.ripple': {
     device: 'ripple signal',
     met: 'a signal at {value}',
-    need: 'tuned to {most} or less, so that it blocks',
+    need: 'tuned to {most} or less, and most of it left',
   },
   'mainDevice.rating': {
     device: 'upstream device, rating',

@@ -56,6 +56,11 @@ export const REASON_MESSAGES: Messages = {
     text: 'Distorting loads make up {sharePct} of the transformer rating, more than is customary beside stages without reactors.',
     consequence: 'Compare the same bank with reactors.',
   },
+  'ripple.absorbed': {
+    level: 'to be accepted',
+    text: 'The bank leaves {leftPct} of the ripple-control signal at {rippleHz}, met with {levelKvar} connected: less than is customary.',
+    consequence: 'Ask the network operator what must be left, or take another reactor ratio.',
+  },
   'network.unknownLoads': {
     level: 'to be accepted',
     text: 'The distorting loads are unknown, so the network is not judged.',

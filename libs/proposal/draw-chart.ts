@@ -1,5 +1,6 @@
 import type { Chart, Mark, Part, Series } from '#libs/present/chart.js';
 import { decimateColumns } from '#libs/present/decimate.js';
+import { ledHeights } from '#libs/present/led-heights.js';
 import { FAINT, INK, PAPER, SOFT, STROKE, WASH } from './ink.js';
 import { hatch } from './marks.js';
 import type { Paper } from './paper.js';
@@ -206,6 +207,8 @@ interface Label {
   style: typeof AXIS;
 }
 
+type Placed = Label & { width: number };
+
 /** Texts last, so that no line crosses them; pushed apart where they would touch. */
 function drawTexts(paper: Paper, marks: readonly Mark[], frame: PlotFrame): void {
   const { plot, atX, atY } = frame;
@@ -214,14 +217,41 @@ function drawTexts(paper: Paper, marks: readonly Mark[], frame: PlotFrame): void
   for (const mark of marks) {
     if (mark.kind === 'level') {
       levels.push({ text: mark.text, x: plot.x + plot.width + 7, y: atY(mark.y) + 2.8, style: AXIS });
-    } else if ((mark.kind === 'ring' || mark.kind === 'label') && mark.text !== undefined) {
+    } else if ((mark.kind === 'ring' || mark.kind === 'label') && mark.text !== undefined && !isLed(mark)) {
       labels.push(
         besidePoint(paper, { text: mark.text, side: mark.side ?? 'right' }, { x: atX(mark.x), y: atY(mark.y) }),
       );
     }
   }
   for (const label of withoutTouching(levels)) paper.type.put([label.text], label.style, label.x, label.y);
-  for (const label of pushedApart(paper, labels, plot)) paper.type.put([label.text], label.style, label.x, label.y);
+  const led = drawLeaders(paper, marks.filter(isLed), frame);
+  for (const label of pushedApart(paper, labels, plot, led))
+    paper.type.put([label.text], label.style, label.x, label.y);
+}
+
+type Led = Extract<Mark, { kind: 'ring' | 'disc' }> & { text: string };
+
+/** A ring whose words stand to the right, where a curve may run: they go up and lead back to it. */
+function isLed(mark: Mark): mark is Led {
+  return mark.kind === 'ring' && mark.text !== undefined && mark.side === 'right';
+}
+
+function drawLeaders(paper: Paper, marks: readonly Led[], { plot, atX, atY }: PlotFrame): Placed[] {
+  const room = { line: 10, above: 2.5, top: plot.y + 3 };
+  const heights = ledHeights(
+    marks.map(({ y }) => atY(y)),
+    room,
+  );
+  return marks.map((mark, k) => {
+    const [x, height] = [atX(mark.x), heights[k]!];
+    const width = paper.type.width([mark.text], ON_CHART);
+    paper.doc
+      .lineWidth(0.5)
+      .moveTo(x + 3, atY(mark.y))
+      .lineTo(x + 13, height)
+      .stroke(SOFT);
+    return { text: mark.text, style: ON_CHART, x: x + 15, y: height + 3, width };
+  });
 }
 
 function besidePoint(paper: Paper, label: { text: string; side: string }, at: { x: number; y: number }): Label {
@@ -243,9 +273,9 @@ function withoutTouching(labels: readonly Label[]): Label[] {
   return kept;
 }
 
-/** Moves labels that overlap downwards, and all of them into the box. */
-function pushedApart(paper: Paper, labels: readonly Label[], box: Box): Label[] {
-  const placed: (Label & { width: number })[] = [];
+/** Moves labels that overlap downwards, and all of them into the box; those that stand already keep their place. */
+function pushedApart(paper: Paper, labels: readonly Label[], box: Box, standing: readonly Placed[]): Label[] {
+  const placed = [...standing];
   for (const label of [...labels].sort((a, b) => a.y - b.y)) {
     const width = paper.type.width([label.text], label.style);
     const x = Math.min(Math.max(label.x, box.x + 1), Math.max(box.x + box.width - width + 6, box.x));

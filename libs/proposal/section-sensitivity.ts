@@ -1,9 +1,11 @@
-import type { BankOutcome, StageOut } from '#libs/engine/index.js';
+import type { BankOutcome, ReactorTrial, StageOut } from '#libs/engine/index.js';
 import { FIRMNESS_HEADS, firmnessFinding, firmnessRows } from '#libs/present/firmness.js';
 import { formatQuantity } from '#libs/present/format-number.js';
+import { TRIAL_HEADS, trialRows } from '#libs/present/trial-rows.js';
 import { verdictWords } from '#libs/present/verdict-words.js';
 import { NOTE, type Paper } from './paper.js';
 import { drawTable } from './table.js';
+import { BODY } from './typesetter.js';
 
 /** How far the verdict stands when an input is another one, and what a lost stage changes. */
 export function drawSensitivity(paper: Paper, { result }: BankOutcome): void {
@@ -23,14 +25,31 @@ export function drawSensitivity(paper: Paper, { result }: BankOutcome): void {
     drawTable(paper, columns, firmnessRows(robustness), { after: 5 });
     paper.paragraph(['Each moved by itself, times its own value, until the verdict is another one.'], { style: NOTE });
   }
-  if (robustness.stageOut.length === 0) return;
+  drawStagesOut(paper, robustness.stageOut);
+  drawTrials(paper, result.reactorTrials);
+}
+
+function drawStagesOut(paper: Paper, stageOut: readonly StageOut[]): void {
+  if (stageOut.length === 0) return;
   const columns = [
     { head: 'one stage out of', share: 22 },
     { head: 'verdict', share: 22 },
     { head: 'nearest to its limit', share: 38 },
     { head: 'share of it', share: 18, align: 'right' as const },
   ];
-  drawTable(paper, columns, robustness.stageOut.map(stageRow), { after: 5 });
+  drawTable(paper, columns, stageOut.map(stageRow), { after: 5 });
+}
+
+const TRIAL_SHARES = [20, 9, 14, 12, 15, 9, 15, 31] as const;
+
+function drawTrials(paper: Paper, trials: readonly ReactorTrial[]): void {
+  if (trials.length === 0) return;
+  paper.heading('10.1', 'Reactor ratios tried with the same stages', { level: 3 });
+  const columns = TRIAL_HEADS.map((head, at) => ({ head, share: TRIAL_SHARES[at]! }));
+  drawTable(paper, columns, trialRows(trials), { style: { ...BODY, size: 8.6 }, after: 5 });
+  const note =
+    'A filter is tuned a little below the order of the greatest current, to take it up; its stage carries that current.';
+  paper.paragraph([note], { style: NOTE });
 }
 
 function stageRow({ group, verdict, worstDuty, worstRatio }: StageOut): string[] {

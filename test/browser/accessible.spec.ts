@@ -14,6 +14,9 @@ const LOOKS = [
   { width: 320, theme: 'dark' },
 ] as const;
 
+/** What a page shows once it stands. */
+const SHOWN: Record<string, RegExp> = { ...STATIONS_SHOWN, 'again?revision=1': /What changed, in numbers/ };
+
 describe.runIf(CHROMIUM !== null)('every page, by the automated rules of accessibility', () => {
   let browser: Browser;
   let database: TestDatabase;
@@ -25,6 +28,8 @@ describe.runIf(CHROMIUM !== null)('every page, by the automated rules of accessi
     database = await databases[0]!.create();
     server = await startServer(database.url, { demo: true });
     siteId = await openDemo(server);
+    // A second revision, so that two can be compared.
+    expect((await server.ask('POST', `/api/sites/${siteId}/assessments?wait=60`, {})).status).toBe(201);
   });
   afterAll(async () => {
     await browser.close();
@@ -36,11 +41,10 @@ describe.runIf(CHROMIUM !== null)('every page, by the automated rules of accessi
   it.each(LOOKS)('has no violation at $width px, $theme, and nothing wider than the window', async (look) => {
     const { page, close, outside, faults } = await openPage(browser, server.base, look);
     const found: string[] = [];
-    const addresses = ['#/', '#/nowhere', ...Object.keys(STATIONS_SHOWN).map((name) => `#/sites/${siteId}/${name}`)];
-    for (const [at, address] of [...addresses, `#/sites/${siteId}/survey`].entries()) {
+    for (const [at, address] of addressesOf(siteId).entries()) {
       if (!SOAKED && at % LOOKS.length !== LOOKS.indexOf(look)) continue;
       await unfold(page, `${server.base}/${address}`);
-      const { violations } = await new AxeBuilder({ page }).exclude('iframe').analyze();
+      const { violations } = await rules(page).exclude('iframe').analyze();
       for (const { id, nodes } of violations) found.push(`${address} ${id}: ${nodes[0]?.html.slice(0, 160)}`);
       const wide = await page.evaluate('document.documentElement.scrollWidth - window.innerWidth');
       if (Number(wide) > 0) found.push(`${address} is ${wide} px wider than the window`);
@@ -56,16 +60,31 @@ describe.runIf(CHROMIUM !== null)('every page, by the automated rules of accessi
     await page.goto(server.base);
     await page.getByText('A new site').waitFor();
     await page.evaluate('document.querySelectorAll("label").forEach((label) => label.remove())');
-    const { violations } = await new AxeBuilder({ page }).analyze();
+    const { violations } = await rules(page).analyze();
     expect(violations.map(({ id }) => id)).toContain('label');
     await close();
   });
 });
 
+/** Every page: those of the sites, those of one site, and those the server makes itself. */
+function addressesOf(siteId: string): string[] {
+  const ofSite = [...Object.keys(STATIONS_SHOWN), 'survey', 'again?revision=1'].map(
+    (name) => `#/sites/${siteId}/${name}`,
+  );
+  const revision = `sites/${siteId}/revisions/1`;
+  const own = [`${revision}/review`, `${revision}/differences/2`, `sites/${siteId}`];
+  return ['#/', '#/nowhere', '#/papers', ...ofSite, ...own, 'verify', 'account', 'people', 'plain', 'nowhere'];
+}
+
+/** All rules on the page as it stands, in the page itself; what passes is not written down. */
+function rules(page: Page): AxeBuilder {
+  return new AxeBuilder({ page }).setLegacyMode().options({ resultTypes: ['violations'] });
+}
+
 /** Opens an address and all that is folded away; where it has figures, the table and the working of the first. */
 async function unfold(page: Page, address: string): Promise<void> {
   await page.goto(address);
-  const shown = STATIONS_SHOWN[address.split('/').at(-1) ?? ''] ?? /site/i;
+  const shown = SHOWN[address.split('/').at(-1) ?? ''] ?? (address.includes('#') ? /site/i : /Varwright/);
   await page.getByText(shown).first().waitFor();
   for (const name of ['Table', 'Working']) {
     const toggle = page.getByRole('button', { name, exact: true }).first();

@@ -46,6 +46,29 @@ describe('a meter file with further ones', () => {
     expect(question.readings[1].maxKw).toBe(500);
   });
 
+  it('settles each by its own answer where the map holds a list, and asks about one beyond its end', () => {
+    const changed = (from: number, kw: string) => (cells: string[], row: number) =>
+      row >= from && row < from + 4 ? cells.with(1, kw) : cells;
+    const first = days(7, 14, changed(800, '500.0'));
+    const second = days(7, 14, changed(900, '600.0'));
+    const files = ['read', days(0, 14), '--extend', first, '--extend', second, '--json'];
+    const settled = (overlap: string[]) => work.run([...files, '--map', work.file({ overlap })]);
+    const maxKw = (overlap: string[]) => JSON.parse(settled(overlap).stdout).record.maxKw;
+    expect(maxKw(['later', 'earlier'])).toBe(500);
+    expect(maxKw(['earlier', 'later'])).toBe(600);
+    const half = settled(['later']);
+    expect(half.code).toBe(3);
+    expect(half.stderr).toContain(`${second}: whether the record or the further file counts in 8 intervals`);
+    const refused = settled(['later', 'earlier', 'first']);
+    expect([refused.code, JSON.parse(refused.stdout).error.problems]).toMatchObject([
+      3,
+      [
+        { path: 'overlap.2', found: '"first"' },
+        { path: 'overlap', found: '3' },
+      ],
+    ]);
+  });
+
   it('says so where one adds nothing', () => {
     const further = days(2, 4);
     const { code, stderr } = work.run(['read', days(0, 7), '--extend', further, '--json']);

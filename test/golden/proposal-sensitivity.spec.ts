@@ -3,6 +3,7 @@
 import { expect, it } from 'vitest';
 import { type Outcome, withRobustness } from '#libs/engine/index.js';
 import { formatNumber } from '#libs/present/format-number.js';
+import { trialReason } from '#libs/present/trial-rows.js';
 import { renderProposal } from '#libs/proposal/render-proposal.js';
 import { MADE_BANK, madeFrame, madeOutcome } from '../support/outcome.js';
 import { squeezed, textOf } from '../support/pdf-text.js';
@@ -26,6 +27,9 @@ it('prints how far each input may move, and what a lost stage leaves', async () 
   expect(rows.length).toBeGreaterThan(2);
   expect(rows.filter((row) => !text.includes(row))).toEqual([]);
   for (const { group } of outcome.result.robustness!.stageOut) expect(text).toContain(squeezed(`group ${group + 1}`));
+  const reasons = outcome.result.reactorTrials.map((trial) => squeezed(trialReason(trial)));
+  expect(reasons.length).toBeGreaterThan(4);
+  expect(reasons.filter((reason) => !text.includes(reason))).toEqual([]);
   // the control: a range of another result is not on this paper
   const ranges = outcome.result.robustness!.ranges.map((range) => ({ ...range, lowFactor: 0.4321 }));
   const other = { ...outcome, result: { ...outcome.result, robustness: { ranges, stageOut: [] } } };

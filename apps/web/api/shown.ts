@@ -97,6 +97,17 @@ export interface JobShown {
   links: { self: string; record: string | null };
 }
 
+/** One version of a shared tariff or price book, as a list gives it. */
+export interface PaperShown {
+  id: string;
+  kind: 'tariff' | 'prices';
+  name: string;
+  version: number;
+  /** the day from which it holds */
+  date: string;
+  createdAt: string;
+}
+
 /** Answers about meter files that are kept under a name. */
 export interface KeptMapShown {
   id: string;

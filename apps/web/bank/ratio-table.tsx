@@ -1,5 +1,6 @@
 import type { ReactorTrial } from '#libs/engine/index.js';
-import { formatNumber, formatQuantity, formatRange } from '#libs/present/format-number.js';
+import { formatNumber, formatQuantity } from '#libs/present/format-number.js';
+import { peakWords, trialReason } from '#libs/present/trial-rows.js';
 import { bankOf } from '../desk/desk-state.js';
 import { useDesk } from '../desk/use-desk.js';
 import { ScrollTable } from '../draw/scroll-table.js';
@@ -34,6 +35,7 @@ export function RatioTable() {
             <tr key={row.reactorPct} className={row.chosen ? 'own' : undefined}>
               <th scope="row" className="nowrap">
                 <span className="trial">
+                  {row.filter ? 'filter ' : ''}
                   {ratioWords(row.reactorPct)}, {formatQuantity(row.ratedV, 'V', 'given')}
                 </span>
                 {row.chosen || bank === null ? (
@@ -69,15 +71,11 @@ function isMixed(bank: ReturnType<typeof bankOf>): boolean {
 }
 
 function TrialCells({ row }: { row: ReactorTrial }) {
-  const { tunedOrderH, lowestPeakH, highestPeakH, verdict, worstDuty, worstRatio } = row;
-  const peaks =
-    lowestPeakH === null || highestPeakH === null
-      ? '–'
-      : formatRange({ low: lowestPeakH, high: highestPeakH }, '', 'computed');
+  const { tunedOrderH, verdict, worstDuty, worstRatio } = row;
   return (
     <>
       <td className="right">{tunedOrderH === null ? '–' : formatNumber(tunedOrderH)}</td>
-      <td className="right nowrap">{peaks}</td>
+      <td className="right nowrap">{peakWords(row)}</td>
       <td>
         <VerdictWords verdict={verdict} />
         {worstDuty === null || worstRatio === null ? null : (
@@ -85,6 +83,7 @@ function TrialCells({ row }: { row: ReactorTrial }) {
             {worstDuty}, {formatQuantity(100 * worstRatio, '%', 'whole')}
           </span>
         )}
+        {row.chosen ? null : <span className="caption beneath">{trialReason(row)}</span>}
       </td>
     </>
   );

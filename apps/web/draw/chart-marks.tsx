@@ -1,5 +1,9 @@
 import type { Chart, Mark, Part } from '#libs/present/chart.js';
+import { ledHeights } from '#libs/present/led-heights.js';
 import { type PlotBox, textWidth } from './plot-box.js';
+
+/** Words that lead back to a ring or a disc [px]. */
+const LED = { line: 16, above: 4, top: 8 };
 
 type Of<K extends Mark['kind']> = Extract<Mark, { kind: K }>;
 type Point = Extract<Mark, { kind: 'ring' | 'disc' }>;
@@ -115,16 +119,19 @@ function Levels({ marks, box }: { marks: Of<'level'>[]; box: PlotBox }) {
   );
 }
 
-/** Words of rings and discs; those to the right keep a line's height from each other and lead back to their point. */
+/** Words of rings and discs; those to the right lead back to their point. */
 function PointWords({ marks, box }: { marks: Point[]; box: PlotBox }) {
-  let lowest = Number.NEGATIVE_INFINITY;
-  const rows = [...marks].sort((a, b) => box.y(a.y) - box.y(b.y));
+  const led = marks.filter(({ side }) => side === 'right');
+  const heights = ledHeights(
+    led.map(({ y }) => box.y(y)),
+    LED,
+  );
   return (
     <g>
-      {rows.map((mark) => {
-        if (mark.side !== 'right') return <BesideWords key={mark.text} mark={mark} box={box} />;
-        lowest = Math.max(box.y(mark.y) - 4, lowest + 16);
-        return <LedWords key={mark.text} mark={mark} box={box} at={lowest} />;
+      {marks.map((mark) => {
+        const at = led.indexOf(mark);
+        if (at === -1) return <BesideWords key={mark.text} mark={mark} box={box} />;
+        return <LedWords key={mark.text} mark={mark} box={box} at={heights[at]!} />;
       })}
     </g>
   );

@@ -58,6 +58,10 @@ export function SitesPage() {
           </p>
         ) : null}
         <NewSite />
+        <p className="row gap">
+          <a href="#/papers">Shared tariffs and price books</a>
+          <a href="/verify">Verify a paper</a>
+        </p>
       </main>
     </div>
   );

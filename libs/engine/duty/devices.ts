@@ -53,6 +53,7 @@ export function devices(
         charge: judgement.charge,
         inrush: judgement.inrush,
         demand,
+        absorbsRipple: judgement.ripple !== null,
       }),
       ...bankDevices(bank, {
         ...shared,

@@ -9,6 +9,7 @@ import {
   nearestPeak,
   summarizeNetwork,
 } from '../network/network-check.js';
+import { type RippleShare, rippleShare } from '../network/ripple-share.js';
 import type { NetworkModel } from '../network/network-model.js';
 import { PeakFinder } from '../network/peaks.js';
 import type { Supply } from '../supply/supply.js';
@@ -45,6 +46,8 @@ export interface Judgement {
   nearPeak: NearPeak | null;
   /** distorting load in % of transformer rating where plain stages meet more than is customary, else null */
   distortingSharePct: number | null;
+  /** what is left of a ripple-control signal where it is less than is customary, else null */
+  ripple: RippleShare | null;
   /** distorting loads or background are unknown */
   networkUnknown: boolean;
   /** a limit exceeded without the bank already */
@@ -53,6 +56,8 @@ export interface Judgement {
 
 /** A peak this near to an order present is a reason to look again [order]. */
 export const PEAK_REACH_H = 0.3;
+/** A bank that leaves less than this share of the network's ripple-control signal is looked at again; common practice. */
+export const RIPPLE_FLOOR = 0.8;
 /** Plain stages are looked at again where distorting loads pass this share of transformer rating [%]. */
 export const PLAIN_SHARE_PCT = 15;
 
@@ -98,7 +103,9 @@ export function judgeBank(model: NetworkModel, bank: Bank, levels: Level[], basi
   ];
   const nearPeak = nearestPeak(model, tables, new PeakFinder(model, bank, PEAK_REACH_H), PEAK_REACH_H);
   const distortingSharePct = plainSharePct(bank, basis);
-  const watched = nearPeak !== null || distortingSharePct !== null || (networkUnknown && bank.groups.length > 0);
+  const ripple = absorbedRipple(model, bank, levels, basis);
+  const unjudged = networkUnknown && bank.groups.length > 0;
+  const watched = nearPeak !== null || distortingSharePct !== null || ripple !== null || unjudged;
   const worst = duties.reduce<Verdict>((verdict, duty) => graver(verdict, duty.verdict), 'clear');
   return {
     network: summarizeNetwork(model, collector.levels(finder)),
@@ -108,6 +115,7 @@ export function judgeBank(model: NetworkModel, bank: Bank, levels: Level[], basi
     verdict: graver(worst, watched ? 'watch' : 'clear'),
     nearPeak,
     distortingSharePct,
+    ripple,
     networkUnknown,
     exceededAlready: bankDuties.exceededAlready,
   };
@@ -216,6 +224,26 @@ export function plainSharePct(bank: Bank, basis: JudgeBasis): number | null {
   const distortingA = (basis.loads.distorting ?? []).reduce((sum, load) => sum + load.fundamentalA, 0);
   const sharePct = (100 * Math.sqrt(3) * basis.voltages.nominalV * distortingA) / 1000 / ratedKva;
   return sharePct > PLAIN_SHARE_PCT ? sharePct : null;
+}
+
+/**
+ * What a bank leaves of the network's ripple-control signal, where that is less than is customary.
+ * @param model the network without the bank
+ * @param bank the bank
+ * @param levels its levels
+ * @param basis supply and frequency
+ * @returns the least share, null where there is no signal or enough is left
+ * @source method-network, practice
+ */
+export function absorbedRipple(
+  model: NetworkModel,
+  bank: Bank,
+  levels: readonly Level[],
+  { supply: { rippleHz }, frequencyHz }: Pick<JudgeBasis, 'supply' | 'frequencyHz'>,
+): RippleShare | null {
+  if (rippleHz === null) return null;
+  const found = rippleShare(model, bank, levels, rippleHz / frequencyHz);
+  return found !== null && found.share < RIPPLE_FLOOR ? found : null;
 }
 
 /**

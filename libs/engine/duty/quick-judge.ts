@@ -7,6 +7,7 @@ import { PeakFinder } from '../network/peaks.js';
 import type { Duty } from './duty-row.js';
 import { inrushStages } from './inrush.js';
 import {
+  absorbedRipple,
   closingDuties,
   dischargeDuties,
   inrushDuty,
@@ -53,7 +54,8 @@ export function quickJudge(model: NetworkModel, bank: Bank, basis: JudgeBasis): 
   const duties = [...stages.flatMap((stage) => stage.duties()), ...network.duties(), ...inrush];
   const worst = (rows: typeof duties): Verdict =>
     rows.reduce<Verdict>((verdict, duty) => graver(verdict, duty.verdict), 'clear');
-  const watched = !known || plainSharePct(bank, basis) !== null;
+  const absorbed = absorbedRipple(model, bank, levels, basis) !== null;
+  const watched = !known || absorbed || plainSharePct(bank, basis) !== null;
   return {
     voltages: worst(duties.filter((duty) => duty.name.startsWith('capacitor voltage'))),
     verdict: graver(worst(duties), watched ? 'watch' : 'clear'),

@@ -29,6 +29,8 @@ export interface StageDeviceBasis {
   charge: readonly ChargeStage[];
   inrush: readonly InrushStage[];
   demand: BankDemand;
+  /** the bank as a whole takes up more of a ripple signal than is customary */
+  absorbsRipple: boolean;
   facts: SiteFacts;
 }
 
@@ -198,7 +200,7 @@ function busRows(bank: Bank, g: number, basis: StageDeviceBasis): DeviceRow[] {
     }),
   ];
   const { rippleHz } = basis.supply;
-  if (rippleHz !== null) rows.push(rippleRow(bank, g, { rippleHz, frequencyHz: basis.frequencyHz }));
+  if (rippleHz !== null) rows.push(rippleRow(bank, g, { ...basis, rippleHz }));
   return rows;
 }
 
@@ -214,11 +216,15 @@ export function voltageChangePct(kvar: number, shortCircuitMva: number): number 
 }
 
 // Below its tuned frequency a stage is a capacitor and draws the signal in; well above it the reactor keeps it out.
-function rippleRow(bank: Bank, g: number, { rippleHz, frequencyHz }: { rippleHz: number; frequencyHz: number }) {
+function rippleRow(
+  bank: Bank,
+  g: number,
+  { rippleHz, frequencyHz, absorbsRipple }: { rippleHz: number; frequencyHz: number; absorbsRipple: boolean },
+) {
   const group = bank.groups[g]!;
   const tuned = tunedOrderH(group.reactorPct);
   const tunedHz = tuned === null ? null : tuned * frequencyHz;
-  const blocks = tunedHz !== null && tunedHz <= RIPPLE_SHARE * rippleHz;
+  const blocks = tunedHz !== null && tunedHz <= RIPPLE_SHARE * rippleHz && !absorbsRipple;
   return deviceRow({
     device: 'stage.ripple',
     group: g,

@@ -64,12 +64,18 @@ export class DemandBox {
   #readSingle(m: number, { low, high }: MeterBox): void {
     const { selection, basis } = this.#shape;
     const { intervals, monthFrom } = selection;
+    const { activeKw: lowActiveKw, laggingKvar: lowLaggingKvar, leadingKvar: lowLeadingKvar } = low;
+    const { activeKw: highActiveKw, laggingKvar: highLaggingKvar, leadingKvar: highLeadingKvar } = high;
+    const end = monthFrom[m + 1]!;
     let [lowKw, highKw, lowSquare, highSquare, lowKvar, highKvar] = [0, 0, 0, 0, 0, 0];
-    for (let k = monthFrom[m]!; k < monthFrom[m + 1]!; k++) {
+    for (let k = monthFrom[m]!; k < end; k++) {
       const i = intervals[k]!;
-      const [kwLo, kwHi] = [low.activeKw[i]!, high.activeKw[i]!];
-      const [laggingLo, laggingHi] = [low.laggingKvar[i]!, high.laggingKvar[i]!];
-      const [leadingLo, leadingHi] = [low.leadingKvar[i]!, high.leadingKvar[i]!];
+      const kwLo = lowActiveKw[i]!;
+      const kwHi = highActiveKw[i]!;
+      const laggingLo = lowLaggingKvar[i]!;
+      const laggingHi = highLaggingKvar[i]!;
+      const leadingLo = lowLeadingKvar[i]!;
+      const leadingHi = highLeadingKvar[i]!;
       const netLo = laggingLo - leadingHi;
       const netHi = laggingHi - leadingLo;
       if (kwLo > lowKw) lowKw = kwLo;

@@ -87,7 +87,8 @@ export class DemandReading {
     for (let k = monthFrom[m]!; k < monthFrom[m + 1]!; k++) {
       const i = intervals[k]!;
       const kw = activeKw[i]!;
-      const [lagging, leading] = [laggingKvar[i]!, leadingKvar[i]!];
+      const lagging = laggingKvar[i]!;
+      const leading = leadingKvar[i]!;
       if (kw > highestKw) {
         highestKw = kw;
         at = i;

@@ -10,6 +10,9 @@ export interface ReachedBank {
   smallestKvar: number;
 }
 
+/** What a reach depends on of a controller's settings. */
+export type ControllerPace = Pick<Control, 'mode' | 'responseRatio' | 'stepDelayS' | 'reconnectDelayS'>;
+
 /** How far the connected kvar may stand from what is wanted; infinite where the controller may be held back further. */
 export interface ControlReach {
   /** connected ≤ all stages, and ≤ 0, wanted + this or what was connected before − `paceKvar`, whichever is most [kvar] */
@@ -44,7 +47,7 @@ const MOST_WAIT_INTERVALS = 999;
  */
 export function controlReach(
   bank: ReachedBank,
-  control: Pick<Control, 'mode' | 'responseRatio' | 'stepDelayS' | 'reconnectDelayS'>,
+  control: ControllerPace,
   view: Pick<ControllerView, 'intervalS' | 'voltageScale' | 'standby'>,
 ): ControlReach {
   const most =

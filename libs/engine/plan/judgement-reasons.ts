@@ -48,13 +48,18 @@ function supplyReasons(judged: Judged, { network: { shortCircuitMinMva } }: Judg
 
 function networkReasons(judged: Judged, bank: Bank, judgement: Judgement): Remark[] {
   const found: Remark[] = [];
-  const { nearPeak, distortingSharePct } = judgement;
+  const { nearPeak, distortingSharePct, ripple } = judgement;
   if (nearPeak !== null) {
     const { levelKvar, corner, peakOrderH, presentOrderH } = nearPeak;
     found.push(remark('peak.near', { levelKvar, peakOrderH, presentOrderH, reachH: PEAK_REACH_H, ...corner }));
   }
   if (distortingSharePct !== null) {
     found.push(remark('plain.distortingShare', { sharePct: distortingSharePct }, { unit: '%', source: 'practice' }));
+  }
+  if (ripple !== null) {
+    const { levelKvar, corner, share } = ripple;
+    const values = { rippleHz: judged.site.supply.rippleHz!, leftPct: 100 * share, levelKvar, ...corner };
+    found.push(remark('ripple.absorbed', values, { path: 'supply.rippleHz', source: 'practice' }));
   }
   if (judgement.networkUnknown && bank.groups.length > 0) {
     if (judged.site.loads.distorting === null) {

@@ -1,19 +1,37 @@
-import { firmVerdict } from '../duty/quick-judge.js';
+import { absorbedRipple, PEAK_REACH_H } from '../duty/judge-bank.js';
+import { type FirmVerdict, firmVerdict } from '../duty/quick-judge.js';
 import type { Verdict } from '../duty/rules.js';
 import type { Bank } from '../layout/bank.js';
-import { bankLevels } from '../layout/levels.js';
-import { tunedOrderH } from '../layout/stage.js';
-import { bankColumn, busColumns, seenSquareInto } from '../network/bus-columns.js';
+import { bankLevels, type Level } from '../layout/levels.js';
+import { effectiveKvar, tunedOrderH } from '../layout/stage.js';
+import { bankModel } from '../network/flow.js';
+import { nearestPeak } from '../network/network-check.js';
 import { PeakFinder } from '../network/peaks.js';
-import { stageAdmittance, stageBranch } from '../network/stage-admittance.js';
+import { rippleShare } from '../network/ripple-share.js';
 import type { Control } from '../operation/control.js';
 import { basisOf, type Judged, overallVerdict } from './judge-basis.js';
 
 /** Reactor ratios that are tried beside the bank's own [%]; common practice, no source. */
 export const TRIED_REACTOR_PCT = [0, 5.67, 7, 12.5, 14] as const;
 
-/** A bank may take this much of the network's ripple-control signal before it is said; common practice, no source. */
-export const RIPPLE_FLOOR = 0.8;
+/** A filter stage is tuned to this share of the order it takes up; common practice, no source. */
+export const FILTER_SHARE = 0.94;
+/** Ratios nearer than this are one [%]. */
+const SAME_PCT = 0.01;
+
+/**
+ * Why a ratio is or is not the bank's: its own; a limit passed; the ripple signal taken up; a limit or a peak near; what is
+ * open whatever the ratio; less kvar from the same stages; or within limits at more kvar, reactor or voltage.
+ */
+export type TrialReason =
+  | 'chosen'
+  | 'overLimit'
+  | 'ripple'
+  | 'nearLimit'
+  | 'nearPeak'
+  | 'openAnyway'
+  | 'givesLess'
+  | 'takesMore';
 
 /** The bank's stages built with one reactor ratio. */
 export interface ReactorTrial {
@@ -21,7 +39,16 @@ export interface ReactorTrial {
   /** voltage the stages were tried at [V] */
   ratedV: number;
   chosen: boolean;
+  /** tuned to take up the greatest order present, not to keep clear of all */
+  filter: boolean;
   tunedOrderH: number | null;
+  /** X_L/R_L at the fundamental, null without a reactor */
+  reactorQuality: number | null;
+  /** all stages at nominal voltage [kvar] */
+  effectiveKvar: number;
+  /** rms current of the stage nearest its limit, and its share of the limit */
+  stageA: number | null;
+  stageRatio: number | null;
   /** least and greatest parallel order over levels above 0, nominal */
   lowestPeakH: number | null;
   highestPeakH: number | null;
@@ -30,11 +57,24 @@ export interface ReactorTrial {
   worstRatio: number | null;
   /** least share of a ripple-control signal that is left with the bank in, or null where there is none */
   rippleShare: number | null;
+  why: TrialReason;
+  /** peak and order present that come too near, where that is why */
+  nearPeakH: number | null;
+  nearOrderH: number | null;
+}
+
+/** One bank to be tried, before it is judged. */
+interface Tried {
+  bank: Bank;
+  reactorPct: number;
+  ratedV: number;
+  chosen: boolean;
+  filter: boolean;
 }
 
 /**
- * The bank's stages tried plain and with the customary reactor ratios, each at the least listed voltage that carries
- * the fundamental: which ratio would be within limits, and why the others are not.
+ * The bank's stages tried plain, with the customary reactor ratios and as a filter of the greatest order present, each at
+ * the least listed voltage that carries the fundamental: which would be within limits, and why the others are not.
  * @param study site and record
  * @param bank the bank
  * @param control settings
@@ -46,15 +86,34 @@ export function reactorTrials(study: Judged, bank: Bank, control: Control, rated
   const own = new Set(bank.groups.map(({ reactorPct }) => reactorPct));
   if (own.size !== 1) return [];
   const ownPct = [...own][0]!;
-  const ratios = [...new Set([...TRIED_REACTOR_PCT, ownPct])].sort((a, b) => a - b);
-  return ratios.map((reactorPct) => {
-    const chosen = reactorPct === ownPct;
-    const voltage = chosen ? bank.groups[0]!.ratedV : voltageFor(study, reactorPct, ratedV);
-    const tried = chosen
-      ? bank
-      : { ...bank, groups: bank.groups.map((group) => ({ ...group, reactorPct, ratedV: voltage })) };
-    return trial(study, tried, control, { reactorPct, ratedV: voltage, chosen });
-  });
+  const filterPct = filterReactorPct(study);
+  const isFilter = (pct: number): boolean => filterPct !== null && Math.abs(pct - filterPct) < SAME_PCT;
+  const ratios = [...new Set([...TRIED_REACTOR_PCT, ownPct])];
+  if (filterPct !== null && !ratios.some(isFilter)) ratios.push(filterPct);
+  const ownKvar = totalKvar(study, bank);
+  return ratios
+    .sort((a, b) => a - b)
+    .map((reactorPct) => {
+      const chosen = reactorPct === ownPct;
+      const voltage = chosen ? bank.groups[0]!.ratedV : voltageFor(study, reactorPct, ratedV);
+      const groups = bank.groups.map((group) => ({ ...group, reactorPct, ratedV: voltage }));
+      const tried = { bank: chosen ? bank : { ...bank, groups }, reactorPct, ratedV: voltage };
+      return trial(study, { ...tried, chosen, filter: isFilter(reactorPct) }, control, ownKvar);
+    });
+}
+
+/**
+ * The ratio of a filter stage: tuned a little below the order of the greatest current, where a wandering of the mains or a
+ * capacitor that ages moves it away from the order, not onto it.
+ * @param study site and network
+ * @returns p [%], null where no load injects an order that a reactor can be tuned below
+ * @source method-network
+ */
+export function filterReactorPct({ model: { excitation } }: Judged): number | null {
+  const { ordersH, injectedA } = excitation;
+  const at = injectedA.reduce((most, a, i) => (a > (injectedA[most] ?? 0) ? i : most), -1);
+  const tunedH = at < 0 ? 0 : FILTER_SHARE * ordersH[at]!;
+  return tunedH < 2 ? null : 100 / tunedH ** 2;
 }
 
 /**
@@ -72,52 +131,63 @@ export function voltageFor(study: Judged, reactorPct: number, ratedV: readonly n
   return ratedV.find((v) => v >= needV) ?? needV;
 }
 
-function trial(
-  study: Judged,
-  bank: Bank,
-  control: Control,
-  head: Pick<ReactorTrial, 'reactorPct' | 'ratedV' | 'chosen'>,
-): ReactorTrial {
-  const found = firmVerdict(study.model, bank, basisOf(study, control));
+function totalKvar(study: Judged, bank: Bank): number {
+  return bank.groups.reduce((sum, group) => sum + group.count * effectiveKvar(group, study.site.nominalV), 0);
+}
+
+function trial(study: Judged, { bank, ...head }: Tried, control: Control, ownKvar: number): ReactorTrial {
+  const basis = basisOf(study, control);
+  const found = firmVerdict(study.model, bank, basis);
   const finder = new PeakFinder(study.model, bank);
   const nominal = study.model.corners.corners[0]!;
-  const levels = bankLevels(bank, study.site.nominalV).slice(1);
-  const peaks = levels.flatMap(({ vectors }) => finder.greatest(vectors[0]!, nominal)?.orderH ?? []);
+  const levels = bankLevels(bank, study.site.nominalV);
+  const peaks = levels.slice(1).flatMap(({ vectors }) => finder.greatest(vectors[0]!, nominal)?.orderH ?? []);
+  const { rippleHz } = study.site.supply;
+  const current = found.duties
+    .filter(({ name }) => name === 'capacitor current')
+    .reduce<FirmVerdict['worst']>((most, duty) => ((duty.ratio ?? 0) > (most?.ratio ?? 0) ? duty : most), null);
+  const verdict = overallVerdict(study, found);
+  const kvar = totalKvar(study, bank);
   return {
     ...head,
     tunedOrderH: tunedOrderH(head.reactorPct),
+    reactorQuality: head.reactorPct === 0 ? null : bank.groups[0]!.reactorQuality,
+    effectiveKvar: kvar,
+    stageA: current?.value ?? null,
+    stageRatio: current?.ratio ?? null,
     lowestPeakH: peaks.length === 0 ? null : Math.min(...peaks),
     highestPeakH: peaks.length === 0 ? null : Math.max(...peaks),
-    verdict: overallVerdict(study, found),
+    verdict,
     worstDuty: found.worst?.name ?? null,
     worstRatio: found.worst?.ratio ?? null,
-    rippleShare: rippleShare(
-      study,
-      bank,
-      levels.map(({ vectors }) => vectors[0]!),
-    ),
+    rippleShare:
+      rippleHz === null
+        ? null
+        : (rippleShare(study.model, bank, levels, rippleHz / study.site.frequencyHz)?.share ?? null),
+    ...reasonOf(study, { bank, levels, chosen: head.chosen, found, verdict, givesLess: kvar < ownKvar * (1 - 1e-9) }),
   };
 }
 
-// What is left of a signal behind the source: |Z|/|Z₀| at its frequency, the least over levels and corners.
-function rippleShare(study: Judged, bank: Bank, vectors: readonly Int32Array[]): number | null {
-  const { rippleHz } = study.site.supply;
-  if (rippleHz === null) return null;
-  const ordersH = Float64Array.of(rippleHz / study.site.frequencyHz);
-  const { corners, factors, networks } = study.model.corners;
-  const exponent = networks[0]!.path.resistanceExponent;
-  const square = new Float64Array(1);
-  let least = 1;
-  for (const corner of corners) {
-    const columns = busColumns(study.model, corner.network, study.model.bankBus, ordersH);
-    const stages = bank.groups.map((group) =>
-      stageAdmittance(stageBranch(group, factors[corner.factors]!, exponent), ordersH),
-    );
-    const without = columns.bank.re[0]! ** 2 + columns.bank.im[0]! ** 2;
-    for (const vector of vectors) {
-      seenSquareInto(columns, bankColumn(stages, vector, 1), square);
-      least = Math.min(least, Math.sqrt(without / square[0]!));
-    }
-  }
-  return least;
+function reasonOf(
+  study: Judged,
+  tried: {
+    bank: Bank;
+    levels: Level[];
+    chosen: boolean;
+    found: FirmVerdict;
+    verdict: Verdict;
+    givesLess: boolean;
+  },
+): Pick<ReactorTrial, 'why' | 'nearPeakH' | 'nearOrderH'> {
+  const { bank, levels, chosen, found, verdict, givesLess } = tried;
+  const because = (why: TrialReason) => ({ why, nearPeakH: null, nearOrderH: null });
+  if (chosen) return because('chosen');
+  if (verdict === 'clear') return because(givesLess ? 'givesLess' : 'takesMore');
+  if (verdict === 'avoid') return because('overLimit');
+  if (absorbedRipple(study.model, bank, levels, study.site) !== null) return because('ripple');
+  if (found.duties.some((duty) => duty.verdict === 'watch')) return because('nearLimit');
+  const finder = new PeakFinder(study.model, bank, PEAK_REACH_H);
+  const peak = nearestPeak(study.model, bankModel(study.model, bank, levels), finder, PEAK_REACH_H);
+  if (peak === null) return because('openAnyway');
+  return { why: 'nearPeak', nearPeakH: peak.peakOrderH, nearOrderH: peak.presentOrderH };
 }

@@ -19,7 +19,8 @@ export interface Beside {
 
 /**
  * What devices and measurements make of the verdict: a device short by a standard rules the bank out, by custom asks for a
- * second look; so does a reading above every corner of the model.
+ * second look; so do a capacitor's voltage that only the level's own rise takes over its limit, and a reading above every
+ * corner of the model.
  * @param beside devices, ageing, measurement
  * @returns `clear` where nothing speaks against it; ageing never counts
  * @source method-devices, method-measured, method-ageing
@@ -27,7 +28,8 @@ export interface Beside {
 export function verdictBeside({ devices, measured }: Beside): Verdict {
   const short = shortDevices(devices).reduce<Verdict>((worst, row) => graver(worst, shortVerdict(row)), 'clear');
   const above = (measured?.rows ?? []).some(({ standing }) => standing === 'above');
-  return graver(short, above ? 'watch' : 'clear');
+  const risen = devices.some(({ device, state }) => device === 'capacitor.voltage' && state === 'short');
+  return graver(short, above || risen ? 'watch' : 'clear');
 }
 
 /**

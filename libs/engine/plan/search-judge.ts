@@ -7,11 +7,13 @@ import { bankOfBuild, type SearchSpace, type SwitchKind } from '../layout/search
 import type { CostBasis } from '../money/capital.js';
 import { presentWeights } from '../money/present-weights.js';
 import type { Control } from '../operation/control.js';
+import type { ControllerPace } from '../operation/control-reach.js';
 import type { ControllerView } from '../operation/controller-view.js';
 import { CandidateRun, type RunGround } from './candidate-run.js';
 import { BuildWorth, lifeCost, type WorthGround } from './candidate-worth.js';
 import { ClearScreen } from './clear-screen.js';
 import { basisOf, judge, overallVerdict } from './judge-basis.js';
+import { KeptKvarh } from './kept-kvarh.js';
 import type { MoneyStudy } from './money-study.js';
 import { runColumns } from './run-columns.js';
 import type { BoundWidth, Candidate, Finished, SearchJudge, SharedBound } from './search.js';
@@ -36,6 +38,7 @@ export class SiteSearchJudge implements SearchJudge {
   readonly demandedFactor: number | null;
   readonly #ground: SearchGround;
   readonly #shared: SharedBounds;
+  readonly #keptKvarh = new KeptKvarh();
   readonly #screen: ClearScreen;
   /** by build and switches: 1 may be clear, 2 is not */
   readonly #closedForms: Uint8Array;
@@ -133,12 +136,15 @@ export class SiteSearchJudge implements SearchJudge {
 
   bound(candidate: Candidate, width: BoundWidth): SharedBound {
     const build = this.#ground.space.builds[candidate.build]!;
-    if (width !== 'controller') return this.#shared.bySize(build, width);
-    return this.#shared.byController(candidate, this.#pace(candidate), this.#view(candidate.setPoint));
+    if (width === 'about') return this.#shared.bySize(build, width);
+    const [pace, view] = [this.#pace(candidate), this.#view(candidate.setPoint)];
+    if (width === 'controller') return this.#shared.byController(candidate, pace, view);
+    const leastKvarh = Float64Array.of(this.#keptKvarh.least({ ...build, stageCount: build.stages }, pace, view));
+    return { ...this.#shared.bySize(build, width), leastKvarh };
   }
 
   // The delays follow from the switches, or from the site; only a natural reconnection delay asks for the bank.
-  #pace(candidate: Candidate): Pick<Control, 'mode' | 'responseRatio' | 'stepDelayS' | 'reconnectDelayS'> {
+  #pace(candidate: Candidate): ControllerPace {
     const { reconnectDelayS } = this.kind(candidate);
     const given = this.#ground.site.control;
     if (reconnectDelayS === null && given?.reconnectDelayS === undefined) {

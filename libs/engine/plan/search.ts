@@ -42,7 +42,10 @@ export interface SearchJudge {
   months: number;
   /** power factor demanded in every month, or null */
   demandedFactor: number | null;
-  /** bounds of the banks of about a candidate's size, of its very size, or of its size and its controller too */
+  /**
+   * bounds of the banks of about a candidate's size; of its size, with the fewest kvarh of its own over the whole record; or
+   * of its size and its controller
+   */
   bound(candidate: Candidate, width: BoundWidth): SharedBound;
   worth(build: number, kind: number): BuildWorth;
   run(candidate: Candidate): CandidateRun;
@@ -179,14 +182,14 @@ class Search {
     const done = this.#monthsDone[id]!;
     if (step === STEP.about && this.#pool === 'clear' && !this.#judge.mayBeClear(candidate)) {
       this.#watched.push({ id, bound });
-    } else if (step === STEP.about) this.#refine(id, candidate, 'size');
-    else if (step === STEP.size) this.#refine(id, candidate, 'controller');
+    } else if (step === STEP.about) this.#refine(id, candidate, { width: 'size', bound });
+    else if (step === STEP.size) this.#refine(id, candidate, { width: 'controller', bound });
     else if (step === STEP.controller && done === Math.min(MONTHS_BEFORE_FLOWS, this.#judge.months - 1)) {
       this.#judgeFlows(id, candidate, bound);
-    } else this.#simulate(id, candidate);
+    } else this.#simulate(id, candidate, bound);
   }
 
-  #refine(id: number, candidate: Candidate, width: 'size' | 'controller'): void {
+  #refine(id: number, candidate: Candidate, { width, bound }: { width: 'size' | 'controller'; bound: number }): void {
     this.#step[id] = STEP[width];
     const shared = this.#judge.bound(candidate, width);
     this.#bounds[id] = shared;
@@ -195,7 +198,9 @@ class Search {
       this.#giveUp(id);
       return;
     }
-    this.#open.push(id, this.#judge.worth(candidate.build, candidate.kind).upperBound(shared, null, 0));
+    const found = this.#judge.worth(candidate.build, candidate.kind).upperBound(shared, null, 0);
+    // each is a bound: the next one may be formed for more banks together
+    this.#open.push(id, Math.min(found, bound));
   }
 
   #judgeFlows(id: number, candidate: Candidate, bound: number): void {
@@ -208,7 +213,7 @@ class Search {
     }
   }
 
-  #simulate(id: number, candidate: Candidate): void {
+  #simulate(id: number, candidate: Candidate, before: number): void {
     const run = this.#runOf(id, candidate);
     const done = this.#monthsDone[id]! + 1;
     this.#monthsDone[id] = done;
@@ -224,7 +229,7 @@ class Search {
       return;
     }
     const bound = this.#judge.worth(candidate.build, candidate.kind).upperBound(this.#bounds[id]!, run, done);
-    this.#open.push(id, bound);
+    this.#open.push(id, Math.min(bound, before));
   }
 
   // Out of the search: by its verdict, or because it can't or did not hold the target.

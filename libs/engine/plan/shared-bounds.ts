@@ -1,8 +1,7 @@
 import type { Build, SearchSpace } from '../layout/search-space.js';
 import { rangeTariff } from '../money/bill-range.js';
 import type { PreparedTariff } from '../money/prepare-tariff.js';
-import type { Control } from '../operation/control.js';
-import { controlReach } from '../operation/control-reach.js';
+import { type ControllerPace, controlReach } from '../operation/control-reach.js';
 import type { ControllerView } from '../operation/controller-view.js';
 import { CellBounds, type CellSize } from './bound-cell.js';
 import { boundRest, type WorthGround } from './candidate-worth.js';
@@ -11,8 +10,8 @@ import { MonthCells } from './month-cell.js';
 import type { Candidate, SharedBound } from './search.js';
 import type { Study } from './study.js';
 
-/** Totals and reaches within these ratios share their bounds. */
-const RATIO = { about: 1.2, size: 1.05, reach: 1.3 } as const;
+/** Totals, reaches and paces within these ratios share their bounds; a pace counts in few intervals. */
+const RATIO = { about: 1.2, size: 1.05, reach: 1.3, pace: 4 } as const;
 /** Keys of bounds: room for steps of size, of reach and of pace, each from −600 on, and for the intervals of a wait. */
 const STEPS = 2000;
 const STEP_ZERO = 600;
@@ -60,16 +59,12 @@ export class SharedBounds {
    * @param view what the controller sees at its set point
    * @returns the bounds; those by size where the controller may be held back
    */
-  byController(
-    candidate: Candidate,
-    control: Pick<Control, 'mode' | 'responseRatio' | 'stepDelayS' | 'reconnectDelayS'>,
-    view: ControllerView,
-  ): SharedBound {
+  byController(candidate: Candidate, control: ControllerPace, view: ControllerView): SharedBound {
     const build = this.#space.builds[candidate.build]!;
     const reach = controlReach({ ...build, stageCount: build.stages }, control, view);
     if (!Number.isFinite(reach.aboveKvar)) return this.bySize(build, 'size');
     const near = stepOf(reach.aboveKvar, RATIO.reach);
-    const pace = Number.isFinite(reach.paceKvar) ? Math.floor(Math.log(reach.paceKvar) / Math.log(RATIO.reach)) : null;
+    const pace = Number.isFinite(reach.paceKvar) ? Math.floor(Math.log(reach.paceKvar) / Math.log(RATIO.pace)) : null;
     const held = Number.isFinite(reach.belowKvar) ? 0 : 1;
     const byReach = keyOf(stepOf(build.totalKvar, RATIO.size), 2 + 2 * candidate.setPoint + held, near);
     const key = (byReach * WAITS + reach.waitIntervals) * STEPS + (pace === null ? 0 : pace + STEP_ZERO);
@@ -78,7 +73,7 @@ export class SharedBounds {
       const wide = {
         aboveKvar: kvar,
         belowKvar: held === 0 ? kvar : Number.POSITIVE_INFINITY,
-        paceKvar: pace === null ? Number.POSITIVE_INFINITY : RATIO.reach ** pace * (1 - 1e-9),
+        paceKvar: pace === null ? Number.POSITIVE_INFINITY : RATIO.pace ** pace * (1 - 1e-9),
       };
       const { wantedKvar } = view;
       const leastWantedKvar = this.#leastOf(wantedKvar, reach.waitIntervals);

@@ -1,0 +1,16 @@
+/**
+ * A paper's fields, one row each, in the order they stand in.
+ * @param part of a document
+ * @param path to it
+ * @returns path and value as text
+ */
+export function paperRows(part: unknown, path = ''): [path: string, value: string][] {
+  if (Array.isArray(part) && part.every((one) => one === null || typeof one !== 'object')) {
+    return [[path, part.join('; ')]];
+  }
+  if (part === null || typeof part !== 'object') return [[path, String(part)]];
+  return Object.entries(part).flatMap(([key, value]) => {
+    const step = Array.isArray(part) ? `${path}[${key}]` : path === '' ? key : `${path}.${key}`;
+    return paperRows(value, step);
+  });
+}
