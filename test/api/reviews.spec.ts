@@ -217,5 +217,26 @@ for (const { name, available, create } of usualDatabases) {
       expect([kept.status, kept.body.revision]).toEqual([201, made.revision + 1]);
       expect((await server.ask('GET', at(made.revision))).body).toEqual(before);
     });
+
+    it('goes back with a reason; what is planned again is the same revision until an input changes, then the next', async () => {
+      const made = await server.ask('POST', '/api/sites', site('Birch Works'));
+      siteId = made.body.id;
+      await server.upload(siteId, meterFile(14));
+      expect((await plan()).status).toBe(201);
+      await act(1, 'submit', {});
+      const back = await act(1, 'return', { reason: 'the target is the old tariff’s' });
+      expect([back.status, back.body.state]).toEqual([200, 'draft']);
+      expect(back.body.returned).toMatchObject({ reason: 'the target is the old tariff’s' });
+      const same = await plan();
+      expect([same.status, same.body.revision]).toEqual([200, 1]);
+      const changed = { ...site('Birch Works'), target: { powerFactor: 0.9 } };
+      await server.ask('PUT', `/api/sites/${siteId}`, changed, { 'if-match': made.headers.get('etag')! });
+      const next = await plan();
+      expect([next.status, next.body.revision]).toEqual([201, 2]);
+      expect([(await review(2)).state, (await review(1)).returned.reason]).toEqual([
+        'draft',
+        back.body.returned.reason,
+      ]);
+    });
   });
 }
