@@ -87,7 +87,7 @@ function arrangementRules(site: Readable, count: number): RuleBreach[] {
     return [{ code: 'missing', path, expected, found: 'nothing' }];
   }
   if (count > 1 && arrangement === 'separate') {
-    const expected = '"parallel": separate boards are not worked out yet, and are never merged';
+    const expected = '"parallel", or a site.network with a bus for each: boards of their own are never merged';
     return [{ code: 'not-supported-yet', path, expected, found: '"separate"' }];
   }
   return [];

@@ -64,7 +64,10 @@ const control = settings.extend({
 });
 
 const order = (pct: Range) => z.strictObject({ orderH: plain({ above: 1, max: 50 }), pct: quantity('pct', pct) });
-const injectedOrder = order({ min: 0, max: 1000 }).extend({ angleDeg: plain({ min: -360, max: 360 }).optional() });
+const injectedOrder = order({ min: 0, max: 1000 }).extend({
+  angleDeg: plain({ min: -360, max: 360 }).optional(),
+  sequence: z.literal('zero').optional(),
+});
 
 const loads = z.strictObject({
   motorSharePct: quantity('motorSharePct', PERCENT).optional(),

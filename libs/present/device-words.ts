@@ -19,6 +19,21 @@ const WORDS: Record<DeviceName, { device: string; met: string; need: string }> =
     met: '{value} on it at the highest, with the rise of the kvar connected',
     need: '{least} or more',
   },
+  'capacitor.crest': {
+    device: 'capacitor, crest voltage',
+    met: '{value} crest, all orders added, with the rise of the kvar connected',
+    need: '[{least} or more rated voltage]',
+  },
+  'capacitor.current': {
+    device: 'capacitor, current',
+    met: '{value} rms, harmonics in',
+    need: '{least} or more rated current',
+  },
+  'capacitor.kvar': {
+    device: 'capacitor, reactive power',
+    met: '{value}, all orders',
+    need: '[{least} or more rated]',
+  },
   'capacitor.overvoltage': {
     device: 'capacitor, overvoltage',
     met: '{value} times its rated voltage',

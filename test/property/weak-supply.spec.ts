@@ -87,6 +87,14 @@ describe('a distorting load', () => {
     expect(problemsOf(() => networkScene(withLoads([load({ bus: 'a' })], { network, supply })))).toEqual([]);
   });
 
+  it('has zero sequence at multiples of three alone: a 5th said to be would vanish unseen', () => {
+    const zero = (orderH: number) => load({ orders: [{ orderH, pct: 30, sequence: 'zero' }] });
+    expect(problemsOf(() => networkScene(withLoads([zero(5)]))).map(({ path }) => path)).toEqual([
+      'loads.distorting[0].orders[0].sequence',
+    ]);
+    expect(problemsOf(() => networkScene(withLoads([zero(9)])))).toEqual([]);
+  });
+
   it('control: of no current is declared, not wrong', () => {
     expect(problemsOf(() => networkScene(withLoads([load({ fundamentalA: 0 })])))).toEqual([]);
   });

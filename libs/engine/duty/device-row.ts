@@ -1,6 +1,9 @@
 /** Devices of a bank, each with the quality it is held against. */
 export const DEVICE_NAMES = [
   'capacitor.voltage',
+  'capacitor.crest',
+  'capacitor.current',
+  'capacitor.kvar',
   'capacitor.overvoltage',
   'capacitor.ambient',
   'capacitor.altitude',
@@ -92,6 +95,9 @@ export function yesOrNo(fitted: boolean | undefined): 'yes' | 'no' | null {
 /** Rows whose shortfall the duties have judged already. */
 const JUDGED_BY_DUTIES: readonly DeviceName[] = [
   'capacitor.voltage',
+  'capacitor.crest',
+  'capacitor.current',
+  'capacitor.kvar',
   'reactor.current',
   'switch.peak',
   'discharge.resistor',

@@ -5,6 +5,7 @@ import { bankModel, eachFlow } from '../network/flow.js';
 import type { NetworkModel } from '../network/network-model.js';
 import { branchRatio, stageBranch } from '../network/stage-admittance.js';
 import { resistanceGrowth } from '../quantity/resistance-growth.js';
+import { CAPACITOR_RULES, type RuleSet } from './rules.js';
 import type { DutyVoltages } from './stage-duties.js';
 
 /** What one stage of a group is asked for, the worst over levels and corners. */
@@ -15,6 +16,12 @@ export interface StageDemand {
   sumA: number;
   /** rms voltage on the capacitor, line to line, the level's own rise counted [V] */
   risenV: number;
+  /** its crest, the voltages of all orders added, the level's own rise counted [V] */
+  risenCrestV: number;
+  /** rms current, over the capacitance factor where the limit grows with it [A] */
+  limitedA: number;
+  /** reactive power of the capacitor, all orders, √3·Σ U_h·I_h [kvar] */
+  kvar: number;
 }
 
 /** What a bank is asked for. */
@@ -30,7 +37,7 @@ export interface BankDemand {
  * @param model the network without the bank
  * @param bank the bank
  * @param levels its levels
- * @param site voltages [V] and least fault level [MVA]
+ * @param site voltages [V], least fault level [MVA], rule set
  * @returns one entry a group, and the reactors' loss
  * @source method-devices
  */
@@ -38,9 +45,11 @@ export function bankDemand(
   model: NetworkModel,
   bank: Bank,
   levels: Level[],
-  site: DutyVoltages & { shortCircuitMinMva: number },
+  site: DutyVoltages & { shortCircuitMinMva: number; rules: RuleSet },
 ): BankDemand {
-  const demand: BankDemand = { groups: bank.groups.map(() => ({ rmsA: 0, sumA: 0, risenV: 0 })), reactorLossW: 0 };
+  const none = { rmsA: 0, sumA: 0, risenV: 0, risenCrestV: 0, limitedA: 0, kvar: 0 };
+  const demand: BankDemand = { groups: bank.groups.map(() => ({ ...none })), reactorLossW: 0 };
+  const { currentGrowsWithCapacitance } = CAPACITOR_RULES[site.rules];
   const exponent = model.corners.networks[0]!.path.resistanceExponent;
   const branches = model.corners.factors.map((factors) =>
     bank.groups.map((group) => stageBranch(group, factors, exponent)),
@@ -52,11 +61,15 @@ export function bankDemand(
       const rise = 1 + flow.levelKvar / (site.shortCircuitMinMva * 1000);
       const ratio = branchRatio(branch);
       const fundamentalA = site.highestV / Math.sqrt(3) / (branch.capacitiveOhm * (1 - ratio));
-      const met = stageMet(flow, g, branch, { fundamentalA, fundamentalV: (rise * site.highestV) / (1 - ratio) });
+      const met = stageMet(flow, g, branch, { fundamentalA, fundamentalV: site.highestV / (1 - ratio), rise });
       const group = demand.groups[g]!;
       group.rmsA = Math.max(group.rmsA, met.rmsA);
       group.sumA = Math.max(group.sumA, met.sumA);
       group.risenV = Math.max(group.risenV, met.rmsV);
+      group.risenCrestV = Math.max(group.risenCrestV, Math.SQRT2 * met.sumV);
+      const growth = currentGrowsWithCapacitance ? flow.corner.corner.capacitanceFactor : 1;
+      group.limitedA = Math.max(group.limitedA, met.rmsA / growth);
+      group.kvar = Math.max(group.kvar, met.kvar);
       lossW += flow.vector[g]! * met.lossW;
     }
     demand.reactorLossW = Math.max(demand.reactorLossW, lossW);
@@ -68,20 +81,32 @@ function stageMet(
   flow: Flow,
   g: number,
   branch: ReturnType<typeof stageBranch>,
-  { fundamentalA, fundamentalV }: { fundamentalA: number; fundamentalV: number },
-): { rmsA: number; sumA: number; rmsV: number; lossW: number } {
+  { fundamentalA, fundamentalV, rise }: { fundamentalA: number; fundamentalV: number; rise: number },
+): { rmsA: number; sumA: number; rmsV: number; sumV: number; kvar: number; lossW: number } {
   let square = fundamentalA ** 2;
   let sumA = fundamentalA;
-  let voltageSquare = fundamentalV ** 2;
+  let voltageSquare = (rise * fundamentalV) ** 2;
+  let sumV = rise * fundamentalV;
+  let powerVa = fundamentalV * fundamentalA;
   let loss = branch.resistanceOhm * fundamentalA ** 2;
   const currents = flow.stageA[g]!;
   for (let i = 0; i < currents.length; i++) {
     const a = currents[i]!;
     const h = flow.ordersH[i]!;
+    const harmonicV = (Math.sqrt(3) * a * branch.capacitiveOhm) / h;
     square += a * a;
     sumA += a;
-    voltageSquare += ((Math.sqrt(3) * a * branch.capacitiveOhm) / h) ** 2;
+    voltageSquare += harmonicV ** 2;
+    sumV += harmonicV;
+    powerVa += harmonicV * a;
     loss += branch.resistanceOhm * resistanceGrowth(h, branch.resistanceExponent) * a * a;
   }
-  return { rmsA: Math.sqrt(square), sumA, rmsV: Math.sqrt(voltageSquare), lossW: 3 * loss };
+  return {
+    rmsA: Math.sqrt(square),
+    sumA,
+    rmsV: Math.sqrt(voltageSquare),
+    sumV,
+    kvar: (Math.sqrt(3) * powerVa) / 1000,
+    lossW: 3 * loss,
+  };
 }

@@ -52,20 +52,45 @@ export function stageDevices(bank: Bank, basis: StageDeviceBasis): DeviceRow[] {
 }
 
 function capacitorRows(bank: Bank, g: number, { rules, demand }: StageDeviceBasis): DeviceRow[] {
-  const { ratedV } = bank.groups[g]!;
-  const { source, highestVoltageRatio } = CAPACITOR_RULES[rules];
-  const { risenV } = demand.groups[g]!;
+  const group = bank.groups[g]!;
+  const { ratedV } = group;
+  const limits = CAPACITOR_RULES[rules];
+  const { source, highestVoltageRatio } = limits;
+  const { risenV, risenCrestV, rmsA, limitedA, kvar } = demand.groups[g]!;
+  const standard = { group: g, basis: 'standard', source } as const;
+  // Without a limit in the rule set the number is for whoever chooses the rating.
+  const judged = (ratio: number | null, needed: (ratio: number) => number, fitted: number) =>
+    ratio === null ? ({ state: 'noted' } as const) : { least: needed(ratio), fitted };
   const allowed = OVERVOLTAGE_DURATIONS.find(({ ratio }) => risenV <= ratio * ratedV * (1 + 1e-9));
   return [
     deviceRow({
       device: 'capacitor.voltage',
-      group: g,
+      ...standard,
       value: risenV,
       least: risenV / highestVoltageRatio,
       unit: 'V',
       fitted: ratedV,
-      basis: 'standard',
-      source,
+    }),
+    deviceRow({
+      device: 'capacitor.crest',
+      ...standard,
+      value: risenCrestV,
+      unit: 'V',
+      ...judged(limits.crestVoltageRatio, (ratio) => risenCrestV / (Math.SQRT2 * ratio), ratedV),
+    }),
+    deviceRow({
+      device: 'capacitor.current',
+      ...standard,
+      value: rmsA,
+      unit: 'A',
+      ...judged(limits.currentRatio, (ratio) => limitedA / ratio, ratedA(group)),
+    }),
+    deviceRow({
+      device: 'capacitor.kvar',
+      ...standard,
+      value: kvar,
+      unit: 'kvar',
+      ...judged(limits.reactivePowerRatio, (ratio) => kvar / ratio, group.ratedKvar),
     }),
     deviceRow({
       device: 'capacitor.overvoltage',

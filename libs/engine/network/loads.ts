@@ -19,6 +19,8 @@ export interface OrderPct {
   pct: number;
   /** angle to a reference common to all loads, the supply’s own voltage say, where known [°]; those with angles add as phasors */
   angleDeg?: number;
+  /** a triplen that flows in the neutral, and so not through the bank; absent where the bank sees it */
+  sequence?: 'zero';
 }
 
 /** A load that injects harmonic current; `orders` wins where both stand. */

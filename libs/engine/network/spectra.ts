@@ -37,7 +37,7 @@ export const SPECTRA: Record<SpectrumName, { source: string; orders: OrderPct[] 
 
 /**
  * The orders a load injects into the bank's network, % of its fundamental. Triplens of the single-phase spectrum are
- * zero sequence and kept out; orders given by the user are what the bank sees.
+ * zero sequence and kept out; orders given by the user are what the bank sees, unless they are said to be zero sequence.
  * @param load a distorting load
  * @returns orders up to 50, ascending
  * @source method-network
@@ -46,7 +46,21 @@ export function injectedOrders(load: DistortingLoad): OrderPct[] {
   const orders =
     load.orders ??
     (load.spectrum === undefined ? [] : SPECTRA[load.spectrum].orders.filter(isBankSequence(load.spectrum)));
-  return orders.filter(({ orderH, pct }) => orderH <= HIGHEST_ORDER_H && pct > 0).sort((a, b) => a.orderH - b.orderH);
+  return orders
+    .filter(({ orderH, pct, sequence }) => sequence !== 'zero' && orderH <= HIGHEST_ORDER_H && pct > 0)
+    .sort((a, b) => a.orderH - b.orderH);
+}
+
+/**
+ * The orders of a load that are zero sequence and add in the neutral, % of its fundamental.
+ * @param load a distorting load
+ * @returns triplens of the single-phase spectrum, or the given orders that are said to be
+ * @source method-network
+ */
+export function zeroSequenceOrders(load: DistortingLoad): OrderPct[] {
+  if (load.orders !== undefined) return load.orders.filter(({ sequence }) => sequence === 'zero');
+  if (load.spectrum !== 'single-phase-electronic') return [];
+  return SPECTRA[load.spectrum].orders.filter(({ orderH }) => orderH % 3 === 0);
 }
 
 function isBankSequence(name: SpectrumName): (order: OrderPct) => boolean {

@@ -110,6 +110,17 @@ describe('what excites the network', () => {
 });
 
 describe('neutral current', () => {
+  it('takes given triplens that are said to be zero sequence, which the bank then does not see', () => {
+    const orders = [
+      { orderH: 3, pct: 80, sequence: 'zero' as const },
+      { orderH: 5, pct: 60 },
+      { orderH: 9, pct: 20 },
+    ];
+    const distorting = [{ name: 'offices', fundamentalA: 100, orders }];
+    expect([...excitation(loads({ distorting }), 400).ordersH]).toEqual([5, 9]);
+    expect(neutralA({ distorting, summation: 'exponent' })).toBeCloseTo(3 * 80, 9);
+  });
+
   const lights = (fundamentalA: number) => ({ name: 'l', fundamentalA, spectrum: 'single-phase-electronic' as const });
 
   it.each([

@@ -1,5 +1,5 @@
 import type { Loads } from './loads.js';
-import { HIGHEST_ORDER_H, injectedOrders, SPECTRA } from './spectra.js';
+import { HIGHEST_ORDER_H, injectedOrders, zeroSequenceOrders } from './spectra.js';
 
 /**
  * Summation exponent of an order: 1 below 5, 1.4 from 5 to 10, 2 above; 1 throughout for arithmetic summation.
@@ -140,9 +140,7 @@ export function excitation(loads: Loads, nominalV: number): Excitation {
 export function neutralA(loads: Pick<Loads, 'distorting' | 'summation'>): number {
   const phaseA = new Map<number, number>();
   for (const load of loads.distorting ?? []) {
-    if (load.orders !== undefined || load.spectrum !== 'single-phase-electronic') continue;
-    for (const { orderH, pct } of SPECTRA[load.spectrum].orders) {
-      if (orderH % 3 !== 0) continue;
+    for (const { orderH, pct } of zeroSequenceOrders(load)) {
       const alpha = summationExponent(orderH, loads.summation);
       phaseA.set(orderH, combine(phaseA.get(orderH) ?? 0, (load.fundamentalA * pct) / 100, alpha));
     }

@@ -1,5 +1,5 @@
 import type { DistortingLoad } from '../network/loads.js';
-import { injectedOrders } from '../network/spectra.js';
+import { injectedOrders, zeroSequenceOrders } from '../network/spectra.js';
 import type { Problem } from '../problem.js';
 import type { Site } from './site.js';
 
@@ -12,7 +12,11 @@ import type { Site } from './site.js';
 export function loadProblems(site: Site): Problem[] {
   return (site.loads?.distorting ?? []).flatMap((load, i) => {
     const path = `loads.distorting[${i}]`;
-    return [...placeProblems(site, load, `${path}.bus`), ...spectrumProblems(load, path)];
+    return [
+      ...placeProblems(site, load, `${path}.bus`),
+      ...spectrumProblems(load, path),
+      ...sequenceProblems(load, path),
+    ];
   });
 }
 
@@ -28,7 +32,19 @@ function placeProblems(site: Site, { bus }: DistortingLoad, path: string): Probl
 }
 
 function spectrumProblems(load: DistortingLoad, path: string): Problem[] {
-  if (load.orders === undefined || load.fundamentalA === 0 || injectedOrders(load).length > 0) return [];
+  if (load.orders === undefined || load.fundamentalA === 0) return [];
+  if (injectedOrders(load).length > 0 || zeroSequenceOrders(load).some(({ pct }) => pct > 0)) return [];
   const expected = 'an order up to 50 above 0 %, or no such load';
   return [{ code: 'inconsistent', path: `${path}.orders`, expected, found: 'orders that come to nothing' }];
+}
+
+// In three equal phases only multiples of three are alike; anything else said to be would vanish from the flow.
+function sequenceProblems(load: DistortingLoad, path: string): Problem[] {
+  return (load.orders ?? []).flatMap(({ orderH, sequence }, k): Problem[] => {
+    if (sequence !== 'zero' || orderH % 3 === 0) return [];
+    const expected = 'a multiple of three; other orders of a balanced load flow through the bank';
+    return [
+      { code: 'inconsistent', path: `${path}.orders[${k}].sequence`, expected, found: `"zero" at order ${orderH}` },
+    ];
+  });
 }

@@ -1,5 +1,5 @@
 import type { Ageing } from '../duty/ageing.js';
-import { type DeviceRow, shortDevices, shortVerdict } from '../duty/device-row.js';
+import { type DeviceName, type DeviceRow, shortDevices, shortVerdict } from '../duty/device-row.js';
 import type { Duty } from '../duty/duty-row.js';
 import type { LimitsPoint } from '../duty/limits-point.js';
 import type { MeasuredCheck } from '../duty/measured-check.js';
@@ -28,7 +28,7 @@ export interface Beside {
 export function verdictBeside({ devices, measured }: Beside): Verdict {
   const short = shortDevices(devices).reduce<Verdict>((worst, row) => graver(worst, shortVerdict(row)), 'clear');
   const above = (measured?.rows ?? []).some(({ standing }) => standing === 'above');
-  const risen = devices.some(({ device, state }) => device === 'capacitor.voltage' && state === 'short');
+  const risen = devices.some(({ device, state }) => RISEN_DEVICES.includes(device) && state === 'short');
   return graver(short, above || risen ? 'watch' : 'clear');
 }
 
@@ -56,14 +56,20 @@ export function reasonsBeside(
   ];
 }
 
+/** Rows that count the level's own rise, which the duties of the same name leave out. */
+const RISEN_DEVICES: readonly DeviceName[] = ['capacitor.voltage', 'capacitor.crest'];
+
 // Within its limit by the highest bus voltage that was entered, over it where the level's own rise is not in that voltage.
 function riseReasons(devices: readonly DeviceRow[], duties: readonly Duty[]): Remark[] {
   const over = (group: number | null): boolean =>
     duties.some(
-      (duty) => duty.group === group && duty.name === 'capacitor voltage, highest' && duty.verdict === 'avoid',
+      ({ group: of, name, verdict }) => of === group && /, (?:highest|crest)$/.test(name) && verdict === 'avoid',
     );
-  return devices
-    .filter(({ device, state, group }) => device === 'capacitor.voltage' && state === 'short' && !over(group))
+  const short = devices.filter(({ device, state }) => RISEN_DEVICES.includes(device) && state === 'short');
+  const asksMost = (row: DeviceRow): boolean =>
+    short.every(({ group, least }) => group !== row.group || Number(least) <= Number(row.least));
+  return short
+    .filter((row) => asksMost(row) && !over(row.group))
     .map(({ group, fitted, least, unit, source }) =>
       remark(
         'device.riseOverLimit',
