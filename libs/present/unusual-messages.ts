@@ -49,7 +49,7 @@ export const UNUSUAL_MESSAGES: Messages = {
     'Read the nameplate again, kvar and voltage together.',
   ),
   'bank.aboveLoad': unusual(
-    'The bank gives {bankKvar}, more than the greatest apparent power of the load, {loadKva}.',
+    'The bank gives {bankKvar}, more than the load ever draws, {loadKva}.',
     'See that the kvar are those of a stage and not of the bank, and that the record is this site’s.',
   ),
   'record.moreKvarhThanKwh': unusual(
