@@ -245,12 +245,14 @@ function drawLeaders(paper: Paper, marks: readonly Led[], { plot, atX, atY }: Pl
   return marks.map((mark, k) => {
     const [x, height] = [atX(mark.x), heights[k]!];
     const width = paper.type.width([mark.text], ON_CHART);
+    // at the right edge the words stand on the other side
+    const side = x + 15 + width <= plot.x + plot.width ? 1 : -1;
     paper.doc
       .lineWidth(0.5)
-      .moveTo(x + 3, atY(mark.y))
-      .lineTo(x + 13, height)
+      .moveTo(x + 3 * side, atY(mark.y))
+      .lineTo(x + 13 * side, height)
       .stroke(SOFT);
-    return { text: mark.text, style: ON_CHART, x: x + 15, y: height + 3, width };
+    return { text: mark.text, style: ON_CHART, x: side > 0 ? x + 15 : x - 15 - width, y: height + 3, width };
   });
 }
 
