@@ -1,5 +1,7 @@
 import { createHash } from 'node:crypto';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import { demoLoad } from '#apps/server/demo/demo-load.js';
+import { DEMO_SITE } from '#apps/server/demo/demo-site.js';
 import { planContent } from '#libs/contract/plan-content.js';
 import { readSite } from '#libs/contract/read-site.js';
 import { zoneTableOf } from '#libs/contract/time-zone.js';
@@ -133,6 +135,17 @@ for (const { name, available, create } of usualDatabases) {
       expect((await server.ask('DELETE', `/api/jobs/${job.id}`)).status).toBe(409);
     });
 
+    it('that search for the bank that pays are cancelled on the way, and leave no revision', async () => {
+      const { id } = (await server.ask('POST', '/api/sites', DEMO_SITE)).body;
+      expect((await server.upload(id, [...demoLoad()].join(''))).status).toBe(201);
+      const job = (await server.ask('POST', `/api/sites/${id}/plans`, {})).body;
+      await untilUnderWay(() => server.ask('GET', job.links.self));
+      expect((await server.ask('DELETE', job.links.self)).body).toMatchObject({ state: 'cancelled', revision: null });
+      expect((await planned(await newSite())).status).toBe(201);
+      expect((await server.ask('GET', `/api/sites/${id}/revisions`)).body.revisions).toEqual([]);
+      expect((await server.ask('GET', job.links.self)).body).toMatchObject({ state: 'cancelled', revision: null });
+    });
+
     it('keep a record that they were made from', async () => {
       const id = await newSite();
       const { body } = await planned(id);
@@ -184,4 +197,13 @@ const tinyTransformer = {
 
 async function* bytesOf(text: string): AsyncGenerator<Uint8Array> {
   yield new TextEncoder().encode(text);
+}
+
+/** Waits until a job says that a part of it is done. */
+async function untilUnderWay(look: () => Promise<{ body: { state: string; progress: number } }>): Promise<void> {
+  for (;;) {
+    const { state, progress } = (await look()).body;
+    if (state === 'running' && progress > 0) return;
+    if (state !== 'queued' && state !== 'running') throw new Error(`the job is ${state} already`);
+  }
 }
