@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { againAddress, readAddress, siteAddress, stationOfPath } from './address.js';
+import { reevaluationAddress, readAddress, siteAddress, stationOfPath } from './address.js';
 
 describe('the station of a field', () => {
   it.each([
@@ -34,13 +34,17 @@ describe('an address', () => {
   });
 
   it('holds a bank against a revision, or against the latest where the number is none', () => {
-    expect(readAddress(againAddress('4197cbe0', 3))).toEqual({ page: 'again', siteId: '4197cbe0', revision: 3 });
+    expect(readAddress(reevaluationAddress('4197cbe0', 3))).toEqual({
+      page: 'reevaluation',
+      siteId: '4197cbe0',
+      revision: 3,
+    });
     for (const hash of [
-      againAddress('4197cbe0'),
-      '#/sites/4197cbe0/again?revision=0',
-      '#/sites/4197cbe0/again?revision=x',
+      reevaluationAddress('4197cbe0'),
+      '#/sites/4197cbe0/reevaluation?revision=0',
+      '#/sites/4197cbe0/reevaluation?revision=x',
     ])
-      expect(readAddress(hash)).toEqual({ page: 'again', siteId: '4197cbe0', revision: null });
+      expect(readAddress(hash)).toEqual({ page: 'reevaluation', siteId: '4197cbe0', revision: null });
   });
 
   it('that leads nowhere says so, rather than opening something else', () => {

@@ -10,7 +10,7 @@ export type Address =
   | { page: 'papers' }
   | { page: 'site'; siteId: string; station: Station; field: string | null; figure: string | null }
   | { page: 'survey'; siteId: string }
-  | { page: 'again'; siteId: string; revision: number | null }
+  | { page: 'reevaluation'; siteId: string; revision: number | null }
   | { page: 'unknown'; asked: string };
 
 /** @param hash as the browser has it */
@@ -21,7 +21,7 @@ export function readAddress(hash: string): Address {
   const [first, siteId, station = 'bank', ...rest] = path.split('/');
   if (first !== 'sites' || siteId === undefined || rest.length > 0) return { page: 'unknown', asked: path };
   if (station === 'survey') return { page: 'survey', siteId };
-  if (station === 'again') return { page: 'again', siteId, revision: revisionIn(search) };
+  if (station === 'reevaluation') return { page: 'reevaluation', siteId, revision: revisionIn(search) };
   if (!isStation(station)) return { page: 'unknown', asked: path };
   const asked = new URLSearchParams(search);
   return { page: 'site', siteId, station, field: asked.get('field'), figure: asked.get('figure') };
@@ -37,8 +37,8 @@ export function siteAddress(siteId: string, station: Station, part: { field?: st
  * Where a site's bank is judged again.
  * @param revision held against; absent, the latest one
  */
-export function againAddress(siteId: string, revision?: number): string {
-  return `#/sites/${siteId}/again${revision === undefined ? '' : `?revision=${revision}`}`;
+export function reevaluationAddress(siteId: string, revision?: number): string {
+  return `#/sites/${siteId}/reevaluation${revision === undefined ? '' : `?revision=${revision}`}`;
 }
 
 function revisionIn(search: string): number | null {

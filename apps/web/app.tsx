@@ -8,7 +8,9 @@ const SurveySheet = lazy(() =>
   import('./record/survey-sheet.js').then(({ SurveySheet: sheet }) => ({ default: sheet })),
 );
 
-const AgainPage = lazy(() => import('./again/again-page.js').then(({ AgainPage: page }) => ({ default: page })));
+const ReevaluationPage = lazy(() =>
+  import('./reevaluation/reevaluation-page.js').then(({ ReevaluationPage: page }) => ({ default: page })),
+);
 
 const PapersPage = lazy(() => import('./papers/papers-page.js').then(({ PapersPage: page }) => ({ default: page })));
 
@@ -32,10 +34,10 @@ export function App() {
           <SurveySheet siteId={address.siteId} />
         </Suspense>
       );
-    case 'again':
+    case 'reevaluation':
       return (
         <Suspense>
-          <AgainPage key={address.siteId} siteId={address.siteId} asked={address.revision} />
+          <ReevaluationPage key={address.siteId} siteId={address.siteId} asked={address.revision} />
         </Suspense>
       );
     case 'unknown':

@@ -1,7 +1,8 @@
 import type { Bill, MoneyPapers } from '#libs/engine/index.js';
 import type { Chart } from './chart.js';
 import { formatFixed } from './format-number.js';
-import { formatMonth, monthLetters } from './local-stamp.js';
+import { formatMonth } from './local-stamp.js';
+import { monthAxis, pairMarks } from './month-pairs.js';
 import { billDecimals, formatMoney } from './money-words.js';
 import { niceStep } from './ticks.js';
 
@@ -32,25 +33,11 @@ export function billsByMonth(bills: { before: Bill; after: Bill }, papers: Money
     sentence: months
       .map(({ name, before, after }) => `${name}: ${amount(before)} before, ${amount(after)} after.`)
       .join(' '),
-    x: {
-      label: '',
-      unit: '',
-      scale: 'linear',
-      from: -0.5,
-      to: months.length - 0.5,
-      ticks: months.map(({ month }, at) => ({
-        at,
-        text: months.length > 8 ? monthLetters(month)[0]! : monthLetters(month),
-      })),
-    },
+    x: monthAxis(months.map(({ month }) => month)),
     y,
     equalScales: false,
     series: [],
-    marks: months.flatMap(({ before, after }, at): Chart['marks'] => [
-      { kind: 'join', x: at, from: before, to: after },
-      { kind: 'ring', x: at, y: before },
-      { kind: 'disc', x: at, y: after },
-    ]),
+    marks: months.flatMap(({ before, after }, at) => pairMarks(at, before, after)),
     table: {
       columns: ['month', 'before', 'after', 'saved'].map((head, at) => ({ head, right: at > 0 })),
       rows: [

@@ -1,7 +1,8 @@
 import type { Reevaluation, SinceWhen } from '#libs/engine/index.js';
 import type { Chart, Mark } from './chart.js';
 import { formatNumber } from './format-number.js';
-import { formatMonth, monthLetters } from './local-stamp.js';
+import { formatMonth } from './local-stamp.js';
+import { monthAxis, pairMarks } from './month-pairs.js';
 import { factorAxis } from './power-factor-by-month.js';
 
 type SinceMonth = SinceWhen['months'][number];
@@ -17,7 +18,6 @@ export function factorSince({ since, newRecord }: Reevaluation, target: number):
   const { months, firstMonthOut, monthsBy } = since;
   const known = months.flatMap((month) => [month.powerFactorMetered, month.powerFactorWithBank]).filter(isKnown);
   if (known.length === 0) return null;
-  const many = months.length > 8;
   return {
     id: 'factorSince',
     finding:
@@ -29,22 +29,14 @@ export function factorSince({ since, newRecord }: Reevaluation, target: number):
       `Since when is told by the ${monthsBy === 'metered' ? 'rings' : 'discs'}.` +
       (newRecord ? ' Quiet ground: the later record.' : ''),
     sentence: months.map(sentenceOf).join(' '),
-    x: {
-      label: '',
-      unit: '',
-      scale: 'linear',
-      from: -0.5,
-      to: months.length - 0.5,
-      ticks: months.map(({ month }, at) => ({
-        at,
-        text: many ? monthLetters(month)[0]! : monthLetters(month),
-        strong: month === firstMonthOut,
-      })),
-    },
+    x: monthAxis(
+      months.map(({ month }) => month),
+      firstMonthOut,
+    ),
     y: factorAxis(Math.min(...known, target)),
     equalScales: false,
     series: [{ part: 'limit', shape: 'line', x: [-0.5, months.length - 0.5], y: [target, target] }],
-    marks: [...(newRecord ? laterGround(months) : []), ...months.flatMap(monthMarks)],
+    marks: [...(newRecord ? laterGround(months) : []), ...months.flatMap(pairOf)],
     table: {
       columns: ['month', 'record', 'as metered', 'with the bank', 'needed kvar'].map((head, at) => ({
         head,
@@ -79,10 +71,6 @@ function laterGround(months: readonly SinceMonth[]): Mark[] {
   );
 }
 
-function monthMarks({ powerFactorMetered: metered, powerFactorWithBank: simulated }: SinceMonth, at: number): Mark[] {
-  return [
-    ...(isKnown(metered) && isKnown(simulated) ? [{ kind: 'join' as const, x: at, from: metered, to: simulated }] : []),
-    ...(isKnown(metered) ? [{ kind: 'ring' as const, x: at, y: metered }] : []),
-    ...(isKnown(simulated) ? [{ kind: 'disc' as const, x: at, y: simulated }] : []),
-  ];
+function pairOf({ powerFactorMetered, powerFactorWithBank }: SinceMonth, at: number): Mark[] {
+  return pairMarks(at, powerFactorMetered, powerFactorWithBank);
 }

@@ -1,7 +1,8 @@
 import type { Outcome } from '#libs/engine/index.js';
-import type { Chart, Mark } from './chart.js';
+import type { Chart } from './chart.js';
 import { formatApart, formatNumber } from './format-number.js';
-import { formatMonth, monthLetters } from './local-stamp.js';
+import { formatMonth } from './local-stamp.js';
+import { monthAxis, pairMarks } from './month-pairs.js';
 import { niceStep } from './ticks.js';
 
 interface MonthPair {
@@ -26,21 +27,11 @@ export function powerFactorByMonth(outcome: Outcome): Chart {
     sentence: months
       .map(({ month, before, after }) => `${formatMonth(month)}: ${number(before)} before, ${number(after)} after.`)
       .join(' '),
-    x: {
-      label: '',
-      unit: '',
-      scale: 'linear',
-      from: -0.5,
-      to: months.length - 0.5,
-      ticks: months.map(({ month }, at) => ({
-        at,
-        text: months.length > 8 ? monthLetters(month)[0]! : monthLetters(month),
-      })),
-    },
+    x: monthAxis(months.map(({ month }) => month)),
     y: factorAxis(Math.min(...known, target)),
     equalScales: false,
     series: [{ part: 'limit', shape: 'line', x: [-0.5, months.length - 0.5], y: [target, target] }],
-    marks: months.flatMap(monthMarks),
+    marks: months.flatMap(({ before, after }, at) => pairMarks(at, before, after)),
     table: {
       columns: ['month', 'before', 'after'].map((head, at) => ({ head, right: at > 0 })),
       rows: months.map(({ month, before, after }) => [formatMonth(month), number(before), beside(after, target)]),
@@ -79,14 +70,6 @@ export function factorAxis(least: number): Chart['y'] {
     ticks.push({ at: n * step, text: (n * step).toFixed(2) });
   }
   return { label: 'power factor', unit: '', scale: 'linear', from, to: 1, ticks };
-}
-
-function monthMarks({ before, after }: MonthPair, at: number): Mark[] {
-  const marks: Mark[] = [];
-  if (before !== null && after !== null) marks.push({ kind: 'join', x: at, from: before, to: after });
-  if (before !== null) marks.push({ kind: 'ring', x: at, y: before });
-  if (after !== null) marks.push({ kind: 'disc', x: at, y: after });
-  return marks;
 }
 
 function finding(months: readonly MonthPair[], target: number): string {

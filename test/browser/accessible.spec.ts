@@ -15,7 +15,7 @@ const LOOKS = [
 ] as const;
 
 /** What a page shows once it stands. */
-const SHOWN: Record<string, RegExp> = { ...STATIONS_SHOWN, 'again?revision=1': /What changed, in numbers/ };
+const SHOWN: Record<string, RegExp> = { ...STATIONS_SHOWN, 'reevaluation?revision=1': /What changed, in numbers/ };
 
 describe.runIf(CHROMIUM !== null)('every page, by the automated rules of accessibility', () => {
   let browser: Browser;
@@ -68,7 +68,7 @@ describe.runIf(CHROMIUM !== null)('every page, by the automated rules of accessi
 
 /** Every page: those of the sites, those of one site, and those the server makes itself. */
 function addressesOf(siteId: string): string[] {
-  const ofSite = [...Object.keys(STATIONS_SHOWN), 'survey', 'again?revision=1'].map(
+  const ofSite = [...Object.keys(STATIONS_SHOWN), 'survey', 'reevaluation?revision=1'].map(
     (name) => `#/sites/${siteId}/${name}`,
   );
   const revision = `sites/${siteId}/revisions/1`;

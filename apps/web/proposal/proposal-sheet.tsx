@@ -1,7 +1,7 @@
 import { formatQuantity, inShownMark } from '#libs/present/format-number.js';
 import { STATE_WORDS } from '#libs/present/review-words.js';
 import { NO_PERMISSION } from '#libs/present/verdict-words.js';
-import { againAddress } from '../address.js';
+import { reevaluationAddress } from '../address.js';
 import type { RevisionHeadShown, RevisionShown } from '../api/shown.js';
 import { isChanged, staleFrom } from '../desk/desk-state.js';
 import { useDesk } from '../desk/use-desk.js';
@@ -94,7 +94,7 @@ function KeptPaper({ kept }: { kept: RevisionShown }) {
         <h2 id="papers">Every revision is kept</h2>
         <Revisions revisions={revisions} />
         <p className="row gap">
-          <a href={againAddress(kept.siteId)}>Judge the bank again, beside a revision</a>
+          <a href={reevaluationAddress(kept.siteId)}>Judge the bank again, beside a revision</a>
         </p>
       </section>
     </>

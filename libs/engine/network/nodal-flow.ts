@@ -7,8 +7,7 @@ import { combine } from './summation.js';
  * The flow in a network of several buses. Connecting the bank at bus b is a rank-1 change of the impedance matrix,
  * Z_pq = z_pq − z_pb·z_bq·Y/(1 + Y·z_bb). From the loads of one bus j: V_i = |Z_ij|·I_j and source current |Z_sj/Z_s|·I_j,
  * s the node behind the source; from the background V_i = |Z_is|·E/|Z_s|, source current |E·(1 − Z_ss/Z_s)/Z_s|.
- * Contributions combine with the order's exponent, the currents with
- * angles as one: |Σ Z_ij·I_j|.
+ * Contributions combine with the order's exponent, the currents with angles as one: |Σ Z_ij·I_j|.
  * @param model the network without the bank, with several buses
  * @param stages y of one stage of each group at the orders present
  * @param flow level, corner and vector are read, everything else is filled

@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { chance } from '../../../test/support/chance.js';
+import { type Chance, chance } from '../../../test/support/chance.js';
 import { runs, SEED } from '../../../test/support/soak.js';
 import { FreeLevels } from './free-levels.js';
 
@@ -110,14 +110,7 @@ describe('the nearest levels', () => {
   it(`are those of trying every count (seed ${SEED})`, () => {
     const random = chance(SEED);
     for (let k = 0; k < runs(500, 10_000); k++) {
-      const sizes = random
-        .oneOf([
-          [100, 50, 25],
-          [40, 20],
-          [60, 30, 15, 7.5],
-          [50, 30, 20],
-        ])
-        .map((kvar): [number, number] => [kvar, random.whole(1, 3)]);
+      const sizes = madeSizes(random);
       const connected = sizes.map(([, stages]) => random.whole(0, stages));
       // whole steps of a quarter of the least difference, so that ties come up
       const wanted = random.whole(-40, 900) * 1.25;
@@ -131,14 +124,7 @@ describe('the nearest levels', () => {
     const random = chance(SEED);
     let held = 0;
     for (let k = 0; k < runs(500, 10_000); k++) {
-      const sizes = random
-        .oneOf([
-          [100, 50, 25],
-          [40, 20],
-          [60, 30, 15, 7.5],
-          [50, 30, 20],
-        ])
-        .map((kvar): [number, number] => [kvar, random.whole(1, 3)]);
+      const sizes = madeSizes(random);
       const connected = sizes.map(([, stages]) => random.whole(0, stages));
       const free = sizes.map(([, stages], c) => random.whole(0, stages - connected[c]!));
       const switched = random.whole(1, 12);
@@ -172,3 +158,14 @@ describe('the nearest levels', () => {
     expect(FreeLevels.of({ classes: [] }, 1e-9)).toBeNull();
   });
 });
+
+/** Stages of one to three of each size, largest first [kvar]. */
+function madeSizes(random: Chance): [kvar: number, stages: number][] {
+  const kvars = random.oneOf([
+    [100, 50, 25],
+    [40, 20],
+    [60, 30, 15, 7.5],
+    [50, 30, 20],
+  ]);
+  return kvars.map((kvar) => [kvar, random.whole(1, 3)]);
+}

@@ -1,4 +1,4 @@
-import { absorbedRipple, PEAK_REACH_H } from '../duty/judge-bank.js';
+import { PEAK_REACH_H, RIPPLE_FLOOR } from '../duty/judge-bank.js';
 import { type FirmVerdict, firmVerdict } from '../duty/quick-judge.js';
 import type { Verdict } from '../duty/rules.js';
 import type { Bank } from '../layout/bank.js';
@@ -143,11 +143,14 @@ function trial(study: Judged, { bank, ...head }: Tried, control: Control, ownKva
   const levels = bankLevels(bank, study.site.nominalV);
   const peaks = levels.slice(1).flatMap(({ vectors }) => finder.greatest(vectors[0]!, nominal)?.orderH ?? []);
   const { rippleHz } = study.site.supply;
+  const ripple = rippleHz === null ? null : rippleShare(study.model, bank, levels, rippleHz / study.site.frequencyHz);
+  const share = ripple?.share ?? null;
   const current = found.duties
     .filter(({ name }) => name === 'capacitor current')
     .reduce<FirmVerdict['worst']>((most, duty) => ((duty.ratio ?? 0) > (most?.ratio ?? 0) ? duty : most), null);
   const verdict = overallVerdict(study, found);
   const kvar = totalKvar(study, bank);
+  const givesLess = kvar < ownKvar * (1 - 1e-9);
   return {
     ...head,
     tunedOrderH: tunedOrderH(head.reactorPct),
@@ -160,11 +163,8 @@ function trial(study: Judged, { bank, ...head }: Tried, control: Control, ownKva
     verdict,
     worstDuty: found.worst?.name ?? null,
     worstRatio: found.worst?.ratio ?? null,
-    rippleShare:
-      rippleHz === null
-        ? null
-        : (rippleShare(study.model, bank, levels, rippleHz / study.site.frequencyHz)?.share ?? null),
-    ...reasonOf(study, { bank, levels, chosen: head.chosen, found, verdict, givesLess: kvar < ownKvar * (1 - 1e-9) }),
+    rippleShare: share,
+    ...reasonOf(study, { bank, levels, chosen: head.chosen, found, verdict, share, givesLess }),
   };
 }
 
@@ -176,15 +176,16 @@ function reasonOf(
     chosen: boolean;
     found: FirmVerdict;
     verdict: Verdict;
+    share: number | null;
     givesLess: boolean;
   },
 ): Pick<ReactorTrial, 'why' | 'nearPeakH' | 'nearOrderH'> {
-  const { bank, levels, chosen, found, verdict, givesLess } = tried;
+  const { bank, levels, chosen, found, verdict, share, givesLess } = tried;
   const because = (why: TrialReason) => ({ why, nearPeakH: null, nearOrderH: null });
   if (chosen) return because('chosen');
   if (verdict === 'clear') return because(givesLess ? 'givesLess' : 'takesMore');
   if (verdict === 'avoid') return because('overLimit');
-  if (absorbedRipple(study.model, bank, levels, study.site) !== null) return because('ripple');
+  if (share !== null && share < RIPPLE_FLOOR) return because('ripple');
   if (found.duties.some((duty) => duty.verdict === 'watch')) return because('nearLimit');
   const finder = new PeakFinder(study.model, bank, PEAK_REACH_H);
   const peak = nearestPeak(study.model, bankModel(study.model, bank, levels), finder, PEAK_REACH_H);

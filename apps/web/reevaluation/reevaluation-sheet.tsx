@@ -30,7 +30,7 @@ const KEY_FIGURES: readonly [id: ResultChange['id'], under: string][] = [
 ];
 
 /** A bank then and now in numbers: first what to do, then since when, what changed, and what would mend it. */
-export function AgainSheet({ site, shown }: { site: SiteShown; shown: ReevaluationShown }) {
+export function ReevaluationSheet({ site, shown }: { site: SiteShown; shown: ReevaluationShown }) {
   const { reevaluation, revision, result } = shown;
   const currency = String(site.site.currency ?? '');
   const finding = inShownMark(reevaluationFinding(reevaluation));

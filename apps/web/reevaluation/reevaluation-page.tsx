@@ -1,14 +1,14 @@
 import { useEffect } from 'react';
 import { inShownMark } from '#libs/present/format-number.js';
-import { againAddress, siteAddress, stationOfPath } from '../address.js';
+import { reevaluationAddress, siteAddress, stationOfPath } from '../address.js';
 import type { RevisionHeadShown, SiteShown } from '../api/shown.js';
 import { FieldFrame } from '../field/field-frame.js';
 import { Head } from '../line/head.js';
-import { AgainSheet } from './again-sheet.js';
-import { type Asked, useHeldSite, useReevaluation } from './use-again.js';
+import { ReevaluationSheet } from './reevaluation-sheet.js';
+import { type Asked, useHeldSite, useReevaluation } from './use-reevaluation.js';
 
 /** The site's bank judged again: what changed since a revision, what to do first, and what would mend it. */
-export function AgainPage({ siteId, asked }: { siteId: string; asked: number | null }) {
+export function ReevaluationPage({ siteId, asked }: { siteId: string; asked: number | null }) {
   const held = useHeldSite(siteId);
   const name = held.state === 'answered' ? held.answer.site.name : '';
   useEffect(() => {
@@ -59,7 +59,7 @@ function HeldAgainst({
             id="field:again.revision"
             value={against?.revision ?? ''}
             onChange={({ target }) => {
-              window.location.hash = againAddress(site.id, Number(target.value));
+              window.location.hash = reevaluationAddress(site.id, Number(target.value));
             }}
           >
             {against === undefined ? <option value="">choose</option> : null}
@@ -85,7 +85,7 @@ function HeldAgainst({
 
 function Judged({ site, revision }: { site: SiteShown; revision: number }) {
   const judged = useReevaluation(site.id, revision);
-  if (judged.state === 'answered') return <AgainSheet site={site} shown={judged.answer} />;
+  if (judged.state === 'answered') return <ReevaluationSheet site={site} shown={judged.answer} />;
   return <Unanswered asked={judged} siteId={site.id} waiting="Judging the bank again" />;
 }
 
