@@ -6,7 +6,10 @@ import { defaultServerConditions, defineConfig } from 'vite';
 
 const root = fileURLToPath(new URL('..', import.meta.url));
 // The thread's program stands among the parts, beside the one that starts it.
-const programs = { main: 'main', 'judge-worker': 'parts/judge-worker' };
+const programs = [
+  { name: 'main', source: `${root}apps/cli/main.ts` },
+  { name: 'parts/judge-worker', source: `${root}apps/cli/judge-worker.ts` },
+].filter(({ source }) => existsSync(source));
 
 export default defineConfig({
   root,
@@ -20,11 +23,7 @@ export default defineConfig({
     minify: false,
     sourcemap: true,
     rolldownOptions: {
-      input: Object.fromEntries(
-        Object.entries(programs)
-          .map(([source, name]) => [name, `${root}apps/cli/${source}.ts`])
-          .filter(([, source]) => existsSync(source)),
-      ),
+      input: Object.fromEntries(programs.map(({ name, source }) => [name, source])),
       output: { entryFileNames: '[name].js', chunkFileNames: 'parts/[name].js' },
     },
   },
