@@ -22,7 +22,7 @@ const dist = join(root, 'dist');
 const stampFile = join(dist, '.built');
 const lockFile = join(dist, '.building');
 const sourceFolders = ['apps/server', 'apps/cli', 'libs', 'migrations'];
-const settings = ['package.json', 'tsconfig.json', '.config/tsconfig.build.json', '.config/vite.commands.config.mjs'];
+const settings = ['package.json', 'tsconfig.json', '.config/tsconfig.build.json', '.config/vite-commands.config.mjs'];
 const pageStampFile = join(dist, '.built-page');
 const pageFolders = ['apps/web', 'libs/engine', 'libs/contract', 'libs/present'];
 const pageSettings = ['package.json', '.config/vite.config.mjs', '.config/page-fonts.mjs'];
@@ -83,7 +83,7 @@ function build() {
   if (done.status !== 0) return false;
   copyAssets(files);
   removeOrphans();
-  if (!bundle('vite.commands.config.mjs')) return false;
+  if (!bundle('vite-commands.config.mjs')) return false;
   writeFileSync(stampFile, stamp);
   return true;
 }
