@@ -3,6 +3,8 @@ import { refuseTooLong } from '../time/stamped-rows.js';
 import { RunColumn } from './run-column.js';
 
 const FIRST_READINGS = 16;
+/** Up to here room is doubled. */
+const FEW_READINGS = 131_072;
 
 /** How the readings of a series were come by, where the file says so. */
 export interface ReadingCounts {
@@ -58,7 +60,8 @@ export class TimedReadings {
     if (wanted > MAX_INTERVALS) refuseTooLong(row);
     if (wanted > this.values.length) {
       const { values } = this;
-      this.values = new Float64Array(Math.min(Math.max(2 * values.length, wanted), MAX_INTERVALS));
+      // room that nobody writes to is not taken up: a long series gets all it can need, and is copied no more
+      this.values = new Float64Array(wanted > FEW_READINGS ? MAX_INTERVALS : Math.max(2 * values.length, wanted));
       this.values.set(values);
     }
     return this.count;
