@@ -48,6 +48,11 @@ export const networkSchema = z.strictObject({
     0,
     40,
   ).optional(),
+  banks: listOf(
+    z.strictObject({ name: label().optional(), bus: label(), stages: listOf(stageGroupSchema, 1, 24) }),
+    0,
+    10,
+  ).optional(),
   bankBus: label().optional(),
   couplingPoint: label().optional(),
   transformerOut: z.boolean().optional(),

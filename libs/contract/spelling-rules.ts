@@ -77,6 +77,7 @@ function reactorRules(site: Readable): RuleBreach[] {
     ['bank', 'stages'],
     ['recordedBank', 'bank', 'stages'],
     ['network', 'capacitors'],
+    ...listAt(site, 'network', 'banks').map((_, index) => ['network', 'banks', index, 'stages']),
   ];
   return lists.flatMap((list) =>
     listAt(site, ...list).flatMap((stage, index) => {

@@ -80,7 +80,7 @@ class Said {
     return min === undefined ? { max: max! } : { max: max!, min };
   }
 
-  bank(given: GivenBank, path: string): BankInput {
+  bank<T extends Pick<GivenBank, 'stages'>>(given: T, path: string): Omit<T, 'stages'> & Pick<BankInput, 'stages'> {
     return { ...given, stages: given.stages.map((stage, g) => this.stage(stage, `${path}.stages[${g}]`)) };
   }
 
@@ -123,7 +123,7 @@ class Said {
   }
 
   network(given: GivenNetwork, json: unknown): NetworkInput {
-    const { cables, capacitors, ...rest } = given;
+    const { cables, capacitors, banks, ...rest } = given;
     for (const list of ['motors', 'resistive'] as const) {
       for (const [i, { kw }] of (given[list] ?? []).entries()) this.#horsepower(json, ['network', list, i, 'kw'], kw);
     }
@@ -133,6 +133,7 @@ class Said {
       ...(capacitors === undefined
         ? {}
         : { capacitors: capacitors.map((stage, i) => this.stage(stage, `network.capacitors[${i}]`)) }),
+      ...(banks === undefined ? {} : { banks: banks.map((bank, i) => this.bank(bank, `network.banks[${i}]`)) }),
     };
   }
 

@@ -1,5 +1,6 @@
 import type { Duty, Figure } from '#libs/engine/index.js';
 import { formatNumber, GAP, inPoints, MINUS } from './format-number.js';
+import { plainName } from './plain-name.js';
 
 /** What a figure is called; `[*]` stands for a group's number. */
 const LABELS: Readonly<Record<string, string>> = {
@@ -96,14 +97,16 @@ function placeWord(id: string): string {
 }
 
 /**
- * A duty's name with its group and order where it has them.
+ * A duty's name with its group, order and place where it has them.
  * @param duty a row of the result
- * @returns "capacitor current, group 1", "harmonic voltage, order 19"
+ * @returns "capacitor current, group 1", "harmonic voltage, order 19", "harmonic voltage, order 5, at MCC 2"
  */
 export function dutyName(duty: Duty): string {
+  const capacitors = duty.capacitors === undefined ? '' : `, ${plainName(duty.capacitors)}`;
+  const bus = duty.bus === undefined || duty.bus === 'primary' ? '' : `, at ${plainName(duty.bus)}`;
   const group = duty.group === null ? '' : `, group${GAP}${duty.group + 1}`;
   const order = duty.orderH === null ? '' : `, order${GAP}${formatNumber(duty.orderH, 'given')}`;
-  return `${duty.name}${group}${order}`;
+  return `${duty.name}${group}${order}${capacitors}${bus}`;
 }
 
 /**
