@@ -1,9 +1,11 @@
 import type { Duty, Figure } from '#libs/engine/index.js';
+import { engineName } from './engine-name.js';
 import { formatNumber, GAP, inPoints, MINUS } from './format-number.js';
+import { say, words } from './language.js';
 import { plainName } from './plain-name.js';
 
 /** What a figure is called; `[*]` stands for a group's number. */
-const LABELS: Readonly<Record<string, string>> = {
+const LABELS: Readonly<Record<string, string>> = words({
   'record.powerFactorLagging': 'power factor of the record, lagging kvarh only',
   'record.powerFactorNet': 'power factor of the record, leading kvarh taken off',
   'estimate.months[*].lowerKvar': 'lower bound of the need, estimated',
@@ -59,7 +61,7 @@ const LABELS: Readonly<Record<string, string>> = {
   'money.irrPct': 'internal rate of return, between two rates next to it',
   'money.annuityPerYear': 'net present value as an equal amount a year',
   'loads.neutralA': 'neutral current of the single-phase loads’ third harmonics',
-};
+});
 
 const SYMBOL = /[\p{L}_][\p{L}\d_]*/gu;
 
@@ -84,7 +86,7 @@ export function labelOf(id: string, duties: readonly Duty[]): string {
   const at = Number(place?.[1] ?? 0);
   if (id.startsWith('duties[')) {
     const duty = duties[at];
-    return duty === undefined ? id : `${dutyName(duty)}, share of its limit`;
+    return duty === undefined ? id : say`${dutyName(duty)}, share of its limit`;
   }
   const label = LABELS[id.replace(/\[\d+\]/, '[*]')];
   if (label === undefined) return id;
@@ -92,8 +94,8 @@ export function labelOf(id: string, duties: readonly Duty[]): string {
 }
 
 function placeWord(id: string): string {
-  if (id.startsWith('estimate.months')) return 'bill';
-  return id.startsWith('estimate.equipment') ? 'entry' : 'group';
+  if (id.startsWith('estimate.months')) return say`bill`;
+  return id.startsWith('estimate.equipment') ? say`entry` : say`group`;
 }
 
 /**
@@ -102,11 +104,11 @@ function placeWord(id: string): string {
  * @returns "capacitor current, group 1", "harmonic voltage, order 19", "harmonic voltage, order 5, at MCC 2"
  */
 export function dutyName(duty: Duty): string {
+  const group = duty.group === null ? '' : say`, group\u00a0${duty.group + 1}`;
+  const order = duty.orderH === null ? '' : say`, order\u00a0${formatNumber(duty.orderH, 'given')}`;
   const capacitors = duty.capacitors === undefined ? '' : `, ${plainName(duty.capacitors)}`;
-  const bus = duty.bus === undefined || duty.bus === 'primary' ? '' : `, at ${plainName(duty.bus)}`;
-  const group = duty.group === null ? '' : `, group${GAP}${duty.group + 1}`;
-  const order = duty.orderH === null ? '' : `, order${GAP}${formatNumber(duty.orderH, 'given')}`;
-  return `${duty.name}${group}${order}${capacitors}${bus}`;
+  const bus = duty.bus === undefined || duty.bus === 'primary' ? '' : say`, at ${plainName(duty.bus)}`;
+  return `${engineName(duty.name)}${group}${order}${capacitors}${bus}`;
 }
 
 /**
