@@ -30,6 +30,7 @@ const generator = z.strictObject({
   ratedKva: quantity('ratedKva', POSITIVE),
   subtransientPct: quantity('subtransientPct', { above: 0, min: 0.1, max: 200 }),
   rOverX: plain({ min: 0, max: 100 }).optional(),
+  xOverR: plain({ min: 0.01, max: 1e6 }).optional(),
   state: z.enum(['off', 'running', 'either']),
 });
 
