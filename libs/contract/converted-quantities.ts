@@ -20,20 +20,21 @@ interface Place {
   found: Understood[];
 }
 
-function collect(json: unknown, given: unknown, { path, unit, found }: Place): void {
-  if (typeof json === 'string' && typeof given === 'number') {
-    const text = json.trim();
-    // "75 kW" of a name in kW is no conversion
-    if (unit !== null && Number.parseFloat(text.replace('−', '-')) !== given) {
-      found.push({ path, given: text, value: given, unit });
-    }
-    return;
-  }
+function collect(json: unknown, given: unknown, place: Place): void {
+  if (typeof json === 'string' && typeof given === 'number') collectNumber(json.trim(), given, place);
   if (typeof json !== 'object' || json === null || typeof given !== 'object' || given === null) return;
   for (const [key, part] of Object.entries(json)) {
-    const inList = Array.isArray(json);
-    const place = inList ? `${path}[${key}]` : path === '' ? key : `${path}.${key}`;
-    const own = inList ? unit : (unitOfName(key) ?? unit);
-    if (Object.hasOwn(given, key)) collect(part, given[key as keyof typeof given], { path: place, unit: own, found });
+    if (!Object.hasOwn(given, key)) continue;
+    const path = Array.isArray(json)
+      ? `${place.path}[${key}]`
+      : [place.path, key].filter((step) => step !== '').join('.');
+    const unit = Array.isArray(json) ? place.unit : (unitOfName(key) ?? place.unit);
+    collect(part, given[key as keyof typeof given], { ...place, path, unit });
   }
+}
+
+// "75 kW" of a name in kW is no conversion.
+function collectNumber(text: string, value: number, { path, unit, found }: Place): void {
+  if (unit === null || Number.parseFloat(text.replace('−', '-')) === value) return;
+  found.push({ path, given: text, value, unit });
 }
