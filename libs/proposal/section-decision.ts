@@ -1,9 +1,9 @@
 import {
   type BankOutcome,
-  cornerSet,
   type EstimateOutcome,
   isEstimate,
   type Outcome,
+  siteCorners,
   type Verdict,
 } from '#libs/engine/index.js';
 import { estimateFigures } from '#libs/present/estimate-words.js';
@@ -96,7 +96,7 @@ function sentences(paper: Paper, outcome: Outcome | EstimateOutcome, width: numb
 }
 
 function verdictSentence({ result, site }: BankOutcome): string {
-  const corners = cornerSet(site.supply, site.loads, site.nominalV).corners.length;
+  const corners = siteCorners(site.supply, site.loads, site).corners.length;
   const levels = result.bank.levelsKvar.length;
   const words = VERDICT_WORDS[result.verdict];
   if (result.bank.stages.length === 0) return words;

@@ -1,11 +1,10 @@
 import {
   AMBIENT_CATEGORIES,
-  cornerSet,
   type EstimateOutcome,
   isEstimate,
-  networkStates,
   type Outcome,
   OVERVOLTAGE_DURATIONS,
+  siteCorners,
 } from '#libs/engine/index.js';
 import { estimateSpan } from '#libs/present/estimate-words.js';
 import { countWord } from '#libs/present/findings.js';
@@ -37,8 +36,7 @@ export function drawValidity(paper: Paper, outcome: Outcome | EstimateOutcome): 
 
 function validityRows(outcome: Outcome | EstimateOutcome): string[][] {
   const { site, bank, result } = outcome;
-  const states = site.topology === null ? [null] : networkStates(site.topology);
-  const { corners } = cornerSet(site.supply, site.loads, site.nominalV, states);
+  const { corners } = siteCorners(site.supply, site.loads, site);
   const buses = result.limits.points.filter((point) => point !== 'primary').length;
   const { faultLevelMva } = site.supply;
   const present = (result.network.levels[0]?.orders ?? []).map(({ orderH }) => formatNumber(orderH, 'given'));
@@ -50,7 +48,13 @@ function validityRows(outcome: Outcome | EstimateOutcome): string[][] {
     ],
     [say`fault level`, formatRange({ low: faultLevelMva.min, high: faultLevelMva.max }, 'MVA')],
     [say`damping load`, formatRange({ low: 0, high: site.loads.dampingKw.max }, 'kW')],
-    [say`tolerances`, say`capacitance 0.95 to 1.10 and inductance 0.97 to 1.03 of the nameplate, all stages alike`],
+    [
+      say`tolerances`,
+      say`capacitance 0.95 to 1.10 and inductance 0.97 to 1.03 of the nameplate, all stages alike` +
+        ((site.topology?.capacitors ?? []).length > 0
+          ? say`; the network’s own capacitors as their nameplates say and at the same ends, all of them alike, whatever the bank’s`
+          : ''),
+    ],
     [say`corners`, say`${corners.length}, nominal included, at every one of ${result.bank.levelsKvar.length} levels`],
     [
       say`orders`,

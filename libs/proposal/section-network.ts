@@ -1,4 +1,5 @@
 import type { BankOutcome, NetworkLevel } from '#libs/engine/index.js';
+import { standingWords } from '#libs/present/duty-bars.js';
 import { engineName } from '#libs/present/engine-name.js';
 import { dutyName } from '#libs/present/figure-words.js';
 import { countWord } from '#libs/present/findings.js';
@@ -6,6 +7,7 @@ import { formatApart, formatNumber, formatQuantity, GAP } from '#libs/present/fo
 import { impedanceOverOrder } from '#libs/present/impedance-over-order.js';
 import { say, words } from '#libs/present/language.js';
 import { marginMap } from '#libs/present/margin-map.js';
+import { plainName } from '#libs/present/plain-name.js';
 import { bankName } from '#libs/present/proposed-words.js';
 import { countDuties, type DutyCount, verdictWords } from '#libs/present/verdict-words.js';
 import { CELL_HEIGHT, cellsHeight, drawCellKey, drawCells } from './draw-cells.js';
@@ -184,6 +186,7 @@ const LEVEL_COLUMNS: Column[] = words([
 function drawLevels(paper: Paper, outcome: BankOutcome): void {
   const { levels } = outcome.result.network;
   const shown = levels.length > 2 * MOST_LEVELS ? spread(levels) : levels;
+  const severalBuses = levels.some(({ bus }) => bus !== levels[0]!.bus);
   paper.heading('9.6', say`Levels, nominal and worst case`, { level: 3 });
   const rows = shown.map((level) => [
     formatNumber(level.levelKvar),
@@ -192,7 +195,7 @@ function drawLevels(paper: Paper, outcome: BankOutcome): void {
     formatQuantity(level.peakOhm, ''),
     formatNumber(level.voltageDistortionPct),
     formatNumber(level.currentDistortionPct),
-    cornerWords(level),
+    severalBuses ? `${plainName(level.bus)}: ${cornerWords(level)}` : cornerWords(level),
   ]);
   drawTable(paper, LEVEL_COLUMNS, rows, { style: SMALL, padding: 1.5 });
   if (shown.length < levels.length) {
@@ -214,5 +217,6 @@ function spread(levels: readonly NetworkLevel[]): NetworkLevel[] {
 
 function cornerWords({ corner }: NetworkLevel): string {
   const given = (value: number) => formatNumber(value, 'given');
-  return `${given(corner.faultLevelMva)}${GAP}MVA, × ${given(corner.capacitanceFactor)}, × ${given(corner.inductanceFactor)}, ${formatQuantity(corner.dampingKw, 'kW')}`;
+  const own = `${given(corner.faultLevelMva)}${GAP}MVA, × ${given(corner.capacitanceFactor)}, × ${given(corner.inductanceFactor)}, ${formatQuantity(corner.dampingKw, 'kW')}`;
+  return [own, ...standingWords(corner)].join(', ');
 }
