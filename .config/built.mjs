@@ -22,7 +22,7 @@ const dist = join(root, 'dist');
 const stampFile = join(dist, '.built');
 const lockFile = join(dist, '.building');
 const sourceFolders = ['apps/server', 'apps/cli', 'libs', 'migrations'];
-const settings = ['package.json', 'tsconfig.json', '.config/tsconfig.build.json'];
+const settings = ['package.json', 'tsconfig.json', '.config/tsconfig.build.json', '.config/vite-commands.config.mjs'];
 const pageStampFile = join(dist, '.built-page');
 const pageFolders = ['apps/web', 'libs/engine', 'libs/contract', 'libs/present'];
 const pageSettings = ['package.json', '.config/vite.config.mjs', '.config/page-fonts.mjs'];
@@ -60,15 +60,16 @@ function isPageCurrent() {
 function buildPage() {
   const stamp = stampOf(filesOf(pageFolders, pageSettings));
   rmSync(pageStampFile, { force: true });
-  const vite = join(root, 'node_modules', 'vite', 'bin', 'vite.js');
-  const config = join(root, '.config', 'vite.config.mjs');
-  const done = spawnSync(process.execPath, [vite, 'build', '--config', config, '--logLevel', 'warn'], {
-    cwd: root,
-    stdio: ['ignore', 2, 2],
-  });
-  if (done.status !== 0) return false;
+  if (!bundle('vite.config.mjs')) return false;
   writeFileSync(pageStampFile, stamp);
   return true;
+}
+
+/** @param {string} config in .config */
+function bundle(config) {
+  const vite = join(root, 'node_modules', 'vite', 'bin', 'vite.js');
+  const words = [vite, 'build', '--config', join(root, '.config', config), '--logLevel', 'warn'];
+  return spawnSync(process.execPath, words, { cwd: root, stdio: ['ignore', 2, 2] }).status === 0;
 }
 
 function build() {
@@ -82,6 +83,7 @@ function build() {
   if (done.status !== 0) return false;
   copyAssets(files);
   removeOrphans();
+  if (!bundle('vite-commands.config.mjs')) return false;
   writeFileSync(stampFile, stamp);
   return true;
 }

@@ -10,8 +10,8 @@ const withDatabases = ['libs/store/**/*.spec.ts', 'libs/jobs/**/*.spec.ts', 'app
 const alone = ['test/browser/pace.spec.ts'];
 const startPostgres = ['test/support/postgres.ts'];
 
-// Pure functions keep nothing between one test and the next, and a test of the store or over HTTP has a database and a
-// server of its own: their files share what is loaded.
+// Pure functions keep nothing between one test and the next, and every other test has a database, a server, a browser or a
+// program of its own: files share what is loaded.
 const shared = { isolate: false };
 
 const project = (name: string, include: string[], timeoutMs: number, more: object = {}) => ({
@@ -50,6 +50,7 @@ export default defineConfig({
       project('whole', ['test/{golden,faults,browser}/**/*.spec.ts'], 120_000, {
         globalSetup: startPostgres,
         exclude: alone,
+        ...shared,
       }),
       project('alone', alone, 120_000, {
         globalSetup: startPostgres,

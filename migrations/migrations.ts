@@ -6,6 +6,7 @@ import { People1764644400000 } from './1764644400000-people.js';
 import { LinksAndAnswers1764648000000 } from './1764648000000-links-and-answers.js';
 import { Reviews1764651600000 } from './1764651600000-reviews.js';
 import { SharedPapers1764655200000 } from './1764655200000-shared-papers.js';
+import { JobNames1764658800000 } from './1764658800000-job-names.js';
 
 /** Every change of the schema, oldest first. */
 export const migrations = [
@@ -17,4 +18,5 @@ export const migrations = [
   LinksAndAnswers1764648000000,
   Reviews1764651600000,
   SharedPapers1764655200000,
+  JobNames1764658800000,
 ];

@@ -34,20 +34,25 @@ interface Asked {
  * @returns the exit code
  */
 export async function judgeSite(line: CommandLine, kind: Outcome['kind']): Promise<number> {
+  // The thread loads what it computes with while the files are read.
+  const pool = new WorkerPool(new URL('./judge-worker.js', import.meta.url), (error) => say(`fault: ${error}`), 1);
+  try {
+    return await judgeWith(pool, line, kind);
+  } finally {
+    await pool.close();
+  }
+}
+
+async function judgeWith(pool: WorkerPool, line: CommandLine, kind: Outcome['kind']): Promise<number> {
   const pdf = line.values.get('pdf');
   const sheet = await paperSheet(line);
   const target = pdf === undefined ? null : await proposalTarget(pdf);
   const exports = await planExports(line);
   const asked: Asked[] = [];
   for (const [at, file] of line.operands.entries()) asked.push(await askedOf(line, kind, file, line.loads[at]));
-  const pool = new WorkerPool(new URL('./judge-worker.js', import.meta.url), (error) => say(`fault: ${error}`), 1);
+  const of = { kind, sheet: target === null ? null : sheet, wantsOutcome: exports.areWanted };
   const judged: Judged[] = [];
-  try {
-    const of = { kind, sheet: target === null ? null : sheet, wantsOutcome: exports.areWanted };
-    for (const one of asked) judged.push(await judge(line, pool, one, of));
-  } finally {
-    await pool.close();
-  }
+  for (const one of asked) judged.push(await judge(line, pool, one, of));
   await nextTurn(); // an interruption that came meanwhile is heard here
   const [first] = judged;
   if (target !== null && first?.proposal) {

@@ -80,7 +80,7 @@ export const ANSWER_SCHEMAS: Record<string, object> = {
   KeptPaper: objectOf(paperHead),
   KeptPaperInFull: objectOf({ ...paperHead, document: open }),
   Job: objectOf({
-    ...{ id: whole, siteId: text, kind: text, attempt: whole, createdAt: moment, finishedAt: nullable(moment) },
+    ...{ id: text, siteId: text, kind: text, attempt: whole, createdAt: moment, finishedAt: nullable(moment) },
     state: { type: 'string', enum: ['queued', 'running', 'done', 'failed', 'cancelled'] },
     progress: { type: 'number', minimum: 0, maximum: 1 },
     error: { nullable: true, allOf: [schemaOf('Problem')] },

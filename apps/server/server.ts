@@ -135,6 +135,7 @@ export async function createServer(
     runners: { plan: runner, assess: runner, [IMPORT]: importRunner({ store, spool, importer }) },
     // A file is read while a plan is made.
     atOnce: 2,
+    leaseS: settings.jobLeaseS,
     describe: describeError,
     onFault: (error) => log.fault(error),
   });

@@ -29,6 +29,11 @@ describe('the settings', () => {
     [{ ORIGIN: 'https://plans.example.org/x' }, /ORIGIN must be/, 'a path is no origin'],
     [{ PORT: '70000' }, /PORT must be a whole number/, 'there are 65 536 ports'],
     [{ PORT: '3000x' }, /PORT must be/, 'a number with a tail is not that number'],
+    [
+      { JOB_LEASE_S: '0' },
+      /JOB_LEASE_S must be a whole number from 2/,
+      'a server would lose its jobs while it does them',
+    ],
     [{ DEMO: 'yes' }, /DEMO must be one of on, off/, 'a word that is not on the list is not guessed at'],
   ];
 

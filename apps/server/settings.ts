@@ -12,6 +12,8 @@ export interface Settings {
   spoolDir: string;
   /** largest meter file [bytes] */
   uploadBytes: number;
+  /** silence of a server after which another takes its jobs over [s] */
+  jobLeaseS: number;
   logLevel: string;
   /** whether an empty database gets the example site */
   demo: boolean;
@@ -27,16 +29,16 @@ export function isLocal({ host, origin }: Pick<Settings, 'host' | 'origin'>): bo
 
 /**
  * Reads the settings from environment variables.
- * @param env PORT, HOST, ORIGIN, DATA_DIR, DB_URL, UPLOAD_MAX_MB, LOG_LEVEL, DEMO; each may be absent
+ * @param env PORT, HOST, ORIGIN, DATA_DIR, DB_URL, UPLOAD_MAX_MB, JOB_LEASE_S, LOG_LEVEL, DEMO; each may be absent
  * @throws Error naming every variable that is wrong
  */
 export function readSettings(env: Record<string, string | undefined>): Settings {
   const faults: string[] = [];
-  const number = (name: string, fallback: number, most: number) => {
+  const number = (name: string, fallback: number, most: number, least = 0) => {
     const text = env[name] ?? String(fallback);
     const value = Number(text);
-    if (/^\d{1,9}$/.test(text) && value <= most) return value;
-    faults.push(`${name} must be a whole number from 0 to ${most}, found "${text}"`);
+    if (/^\d{1,9}$/.test(text) && value >= least && value <= most) return value;
+    faults.push(`${name} must be a whole number from ${least} to ${most}, found "${text}"`);
     return fallback;
   };
   const word = (name: string, fallback: string, words: string[]) => {
@@ -52,6 +54,7 @@ export function readSettings(env: Record<string, string | undefined>): Settings 
     dbUrl: env.DB_URL ?? `sqlite:${join(dataDir, 'varwright.sqlite')}`,
     spoolDir: join(dataDir, 'spool'),
     uploadBytes: number('UPLOAD_MAX_MB', 100, 2000) * 1_000_000,
+    jobLeaseS: number('JOB_LEASE_S', 10, 600, 2),
     logLevel: word('LOG_LEVEL', 'info', LOG_LEVELS),
     demo: word('DEMO', 'on', ['on', 'off']) === 'on',
   };

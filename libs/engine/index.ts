@@ -81,6 +81,7 @@ export * from './network/spectra.js';
 export * from './network/stage-admittance.js';
 export * from './network/stage-kinds.js';
 export * from './network/summation.js';
+export * from './network/tolerance-factors.js';
 export * from './network/topology.js';
 export * from './operation/control.js';
 export * from './operation/control-reach.js';

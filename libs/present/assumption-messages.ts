@@ -68,6 +68,10 @@ export const ASSUMPTION_MESSAGES: Messages = {
     'Nothing was read at the orders {orders}: their currents are as stated.',
     'Read them too, or compare with the data sheets of the loads.',
   ),
+  'network.cables.steady': assumed(
+    'Cables keep the resistance they have at the fundamental at every order: their skin effect is small, and damping less is the severe end.',
+    'Nothing to settle; the resistance of a warm cable is higher still.',
+  ),
   'loads.distorting.none': assumed(
     'It was declared that no load distorts.',
     'Walk the site: drives, rectifiers, welders, lighting.',

@@ -1,9 +1,9 @@
 import type { Remark } from '#libs/engine/index.js';
-
-const PRACTICE = 'common practice';
+import { engineName } from './engine-name.js';
+import { say, words } from './language.js';
 
 /** Where an assumed value comes from, by the beginning of its code; the longest that fits counts. */
-const SOURCES: Readonly<Record<string, string>> = {
+const SOURCES: Readonly<Record<string, string>> = words({
   'default.bus.highestV': 'usual tolerance of the supply',
   'default.limits.emcClass': 'usual class of an industrial bus',
   'default.limits.point': 'nothing said',
@@ -27,7 +27,7 @@ const SOURCES: Readonly<Record<string, string>> = {
   'bank.ignored': 'the site file',
   'estimate.calendarMonths': 'the bills',
   estimate: 'the estimate’s method',
-};
+});
 
 /**
  * What an assumption rests on.
@@ -35,9 +35,9 @@ const SOURCES: Readonly<Record<string, string>> = {
  * @returns its source in words; common practice where no better one is known
  */
 export function assumptionSource({ code, source }: Remark): string {
-  if (source !== null && source !== 'practice') return source;
+  if (source !== null && source !== 'practice') return engineName(source);
   const known = Object.keys(SOURCES)
     .filter((begin) => code.startsWith(begin))
     .sort((a, b) => b.length - a.length)[0];
-  return known === undefined ? PRACTICE : SOURCES[known]!;
+  return known === undefined ? say`common practice` : SOURCES[known]!;
 }

@@ -1,4 +1,6 @@
 import type { BankOutcome, RuleSet } from '#libs/engine/index.js';
+import { engineName } from './engine-name.js';
+import { words } from './language.js';
 
 /** A document the plan rests on. */
 export interface Basis {
@@ -7,10 +9,10 @@ export interface Basis {
   usedFor: string;
 }
 
-export const RULE_SET_WORDS: Record<RuleSet, string> = { iec: 'IEC rules', ieee: 'IEEE rules' };
+export const RULE_SET_WORDS: Record<RuleSet, string> = words({ iec: 'IEC rules', ieee: 'IEEE rules' });
 
 /** Documents used whatever the duties are. */
-const ALWAYS: Record<RuleSet, Basis[]> = {
+const ALWAYS: Record<RuleSet, Basis[]> = words({
   iec: [
     { rule: 'IEC TR 61000-3-6', edition: 'summation exponents', usedFor: 'adding distorting loads and background' },
     { rule: 'common practice', edition: 'no source', usedFor: 'controller, resonance distance, fuse range' },
@@ -20,10 +22,10 @@ const ALWAYS: Record<RuleSet, Basis[]> = {
     { rule: 'NEC', edition: 'article 460', usedFor: 'discharge, conductors and disconnector' },
     { rule: 'common practice', edition: 'no source', usedFor: 'controller, resonance distance, fuse range' },
   ],
-};
+});
 
 /** What a rule set names besides its duties. */
-const ALSO: Record<string, string[]> = { 'IEC 60831-1:2014': ['discharge', 'conductors and disconnector'] };
+const ALSO: Record<string, string[]> = words({ 'IEC 60831-1:2014': ['discharge', 'conductors and disconnector'] });
 
 /**
  * Every document the plan was judged by, with its edition and what it was used for.
@@ -40,7 +42,7 @@ export function basisOfDesign(outcome: BankOutcome): Basis[] {
   }
   const rows = [...bySource].map(([source, names]) => {
     const [rule, edition] = splitEdition(source);
-    return { rule, edition, usedFor: [...names, ...(ALSO[source] ?? [])].join(', ') };
+    return { rule, edition, usedFor: [...[...names].map(engineName), ...(ALSO[source] ?? [])].join(', ') };
   });
   return [...rows, ...ALWAYS[outcome.site.rules]];
 }

@@ -1,6 +1,7 @@
 import type { Bill, MoneyPapers } from '#libs/engine/index.js';
 import type { Chart } from './chart.js';
 import { formatFixed } from './format-number.js';
+import { say } from './language.js';
 import { formatMonth } from './local-stamp.js';
 import { monthAxis, pairMarks } from './month-pairs.js';
 import { billDecimals, formatMoney } from './money-words.js';
@@ -21,17 +22,17 @@ export function billsByMonth(bills: { before: Bill; after: Bill }, papers: Money
   });
   const values = months.flatMap(({ before, after }) => [before, after]);
   const saved = bills.before.total - bills.after.total;
-  const partial = months.some(({ name }) => name.endsWith('*')) ? ' *: the record holds a part of this month.' : '';
+  const partial = months.some(({ name }) => name.endsWith('*')) ? say` *: the record holds a part of this month.` : '';
   const y = amountAxis(Math.min(...values), Math.max(...values), papers.currency);
   return {
     id: 'billsByMonth',
     finding:
       saved >= 0
-        ? `The bills fall by ${formatMoney(saved, papers.currency, decimals)} over the record`
-        : `The bills rise by ${formatMoney(-saved, papers.currency, decimals)} over the record`,
-    caption: `Bill of each month at the meter. Ring: before. Disc: after.${y.from > 0 ? ' The axis does not begin at 0.' : ''}${partial}`,
+        ? say`The bills fall by ${formatMoney(saved, papers.currency, decimals)} over the record`
+        : say`The bills rise by ${formatMoney(-saved, papers.currency, decimals)} over the record`,
+    caption: say`Bill of each month at the meter. Ring: before. Disc: after.${y.from > 0 ? say` The axis does not begin at 0.` : ''}${partial}`,
     sentence: months
-      .map(({ name, before, after }) => `${name}: ${amount(before)} before, ${amount(after)} after.`)
+      .map(({ name, before, after }) => say`${name}: ${amount(before)} before, ${amount(after)} after.`)
       .join(' '),
     x: monthAxis(months.map(({ month }) => month)),
     y,
@@ -39,10 +40,10 @@ export function billsByMonth(bills: { before: Bill; after: Bill }, papers: Money
     series: [],
     marks: months.flatMap(({ before, after }, at) => pairMarks(at, before, after)),
     table: {
-      columns: ['month', 'before', 'after', 'saved'].map((head, at) => ({ head, right: at > 0 })),
+      columns: [say`month`, say`before`, say`after`, say`saved`].map((head, at) => ({ head, right: at > 0 })),
       rows: [
         ...months.map((month) => [month.name, amount(month.before), amount(month.after), amount(month.saved)]),
-        ['together', amount(bills.before.total), amount(bills.after.total), amount(saved)],
+        [say`together`, amount(bills.before.total), amount(bills.after.total), amount(saved)],
       ],
     },
   };
@@ -58,5 +59,5 @@ function amountAxis(least: number, most: number, currency: string): Chart['y'] {
   for (let n = Math.round(from / step); n * step <= to + step / 2; n++) {
     ticks.push({ at: n * step, text: formatFixed(n * step, decimals) });
   }
-  return { label: 'bill', unit: currency, scale: 'linear', from, to, ticks };
+  return { label: say`bill`, unit: currency, scale: 'linear', from, to, ticks };
 }

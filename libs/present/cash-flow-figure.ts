@@ -1,6 +1,7 @@
 import type { Money, MoneyPapers, Worth } from '#libs/engine/index.js';
 import type { Chart, Mark, Series } from './chart.js';
 import { formatFixed } from './format-number.js';
+import { say } from './language.js';
 import { formatMoney, formatPayback, paybackWords } from './money-words.js';
 import { linearAxis } from './ticks.js';
 
@@ -37,15 +38,13 @@ export function cashFlowFigure(money: PricedMoney, papers: MoneyPapers): Chart {
     id: 'cashFlow',
     finding:
       money.paybackYears === null
-        ? `Payback: ${paybackWords(money, papers.finance.horizonYears)}`
-        : `Paid back after ${formatPayback(money.paybackYears)}`,
-    caption:
-      'Bars: net of each year, the capital at 0. Line: their sum, month by month, not discounted. Ring: paid back.',
-    sentence:
-      `${formatMoney(capital, papers.currency)} are paid at the beginning; after ${lastYear} years the sum is ` +
-      `${formatMoney(end, papers.currency)}.`,
+        ? say`Payback: ${paybackWords(money, papers.finance.horizonYears)}`
+        : say`Paid back after ${formatPayback(money.paybackYears)}`,
+    caption: say`Bars: net of each year, the capital at 0. Line: their sum, month by month, not discounted. Ring: paid back.`,
+    sentence: say`${formatMoney(capital, papers.currency)} are paid at the beginning; after ${lastYear} years the sum is
+        ${formatMoney(end, papers.currency)}.`,
     x: {
-      label: 'years',
+      label: say`years`,
       unit: '',
       scale: 'linear',
       from: -0.5,
@@ -78,7 +77,7 @@ function cashTable({ cashFlow, capital }: PricedMoney): Chart['table'] {
   });
   const start = formatFixed(0 - capital.total, 0);
   return {
-    columns: ['year', 'in the year', 'discounted', 'sum'].map((head, at) => ({ head, right: at > 0 })),
+    columns: [say`year`, say`in the year`, say`discounted`, say`sum`].map((head, at) => ({ head, right: at > 0 })),
     rows: [
       ['0', start, start, start],
       ...rows.map(({ year, net, discounted, sum }) => [

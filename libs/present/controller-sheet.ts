@@ -1,6 +1,7 @@
 import { type BankOutcome, type ControllerSetting, controllerSettings, type SettingName } from '#libs/engine/index.js';
 import { formatNumber, formatQuantity, GAP } from './format-number.js';
 import { groupName } from './group-name.js';
+import { words } from './language.js';
 
 /** A line of the settings sheet: the setting, what to enter, and where that comes from. */
 export interface SettingLine {
@@ -10,7 +11,7 @@ export interface SettingLine {
 }
 
 /** What a setting is called, and how its value was derived where its origin alone does not say. */
-const WORDS: Record<SettingName, { name: string; derived?: string }> = {
+const WORDS: Record<SettingName, { name: string; derived?: string }> = words({
   setPoint: { name: 'set point, power factor' },
   mode: { name: 'switching order' },
   wear: { name: 'choice among equal stages' },
@@ -38,9 +39,9 @@ const WORDS: Record<SettingName, { name: string; derived?: string }> = {
     derived: 'ambient category of the capacitors',
   },
   generator: { name: 'while a generator feeds the board' },
-};
+});
 
-const ORIGINS: Record<ControllerSetting['from'], string> = {
+const ORIGINS: Record<ControllerSetting['from'], string> = words({
   site: 'as entered for the site',
   searched: 'searched for: the least that holds the target within limits',
   default: 'customary value',
@@ -49,16 +50,16 @@ const ORIGINS: Record<ControllerSetting['from'], string> = {
   standard: 'standard',
   practice: 'common practice',
   open: 'not entered: to be found on site',
-};
+});
 
-const CHOICES: Readonly<Record<string, string>> = {
+const CHOICES: Readonly<Record<string, string>> = words({
   nearestLevel: 'to the nearest level',
   oneByOne: 'one by one',
   even: 'by turns',
   inOrder: 'in order',
   all: 'all stages drop at once',
   heldOff: 'bank held off',
-};
+});
 
 /**
  * The controller's settings as a commissioner enters them.

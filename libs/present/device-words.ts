@@ -1,19 +1,20 @@
 import type { DeviceName, DeviceRow, DeviceState } from '#libs/engine/index.js';
-import { formatNumber, formatQuantity, GAP } from './format-number.js';
+import { formatNumber, formatQuantity } from './format-number.js';
+import { say, words } from './language.js';
 
 /** How a device stands, as a person reads it. */
-export const DEVICE_STATE_WORDS: Record<DeviceState, string> = {
+export const DEVICE_STATE_WORDS: Record<DeviceState, string> = words({
   fits: 'fits',
   short: 'falls short',
   open: 'open',
   noted: '–',
-};
+});
 
 /**
  * Device, what it meets, and what it needs. `{value}`, `{least}`, `{most}` are the row's numbers with their unit; a
  * sentence in [brackets] is left out where one of its numbers is absent.
  */
-const WORDS: Record<DeviceName, { device: string; met: string; need: string }> = {
+const WORDS: Record<DeviceName, { device: string; met: string; need: string }> = words({
   'capacitor.voltage': {
     device: 'capacitor, rated voltage',
     met: '{value} on it at the highest, with the rise of the kvar connected',
@@ -143,10 +144,10 @@ const WORDS: Record<DeviceName, { device: string; met: string; need: string }> =
     met: '{value} would over-excite it',
     need: 'bank held off[, or at most {most}]',
   },
-};
+});
 
 /** Words of an entered value. */
-const ENTERED: Readonly<Record<string, string>> = {
+const ENTERED: Readonly<Record<string, string>> = words({
   yes: 'fitted',
   no: 'not fitted',
   delta: 'delta',
@@ -157,7 +158,7 @@ const ENTERED: Readonly<Record<string, string>> = {
   bank: 'sees the bank alone',
   none: 'no ventilation',
   natural: 'natural ventilation',
-};
+});
 
 /** One row of the table of devices, as a person reads it. */
 export interface DeviceWords {
@@ -181,14 +182,14 @@ export function deviceTable({ result }: { result: { devices: readonly DeviceRow[
 
 function deviceWords(row: DeviceRow, severalGroups: boolean): DeviceWords {
   const { device, met, need } = WORDS[row.device];
-  const group = row.group === null || !severalGroups ? '' : `, group${GAP}${row.group + 1}`;
+  const group = row.group === null || !severalGroups ? '' : say`, group\u00a0${row.group + 1}`;
   return {
     device: `${device}${group}`,
     met: filled(met, row),
     need: filled(need, row),
-    fitted: row.fitted === null ? (row.state === 'noted' ? '–' : 'not entered') : shown(row.fitted, row.unit),
+    fitted: row.fitted === null ? (row.state === 'noted' ? '–' : say`not entered`) : shown(row.fitted, row.unit),
     state: DEVICE_STATE_WORDS[row.state],
-    basis: row.source === 'practice' ? 'common practice' : row.source,
+    basis: row.source === 'practice' ? say`common practice` : row.source,
   };
 }
 

@@ -1,6 +1,7 @@
 import type { Outcome } from '#libs/engine/index.js';
 import type { Chart, Mark } from './chart.js';
 import { formatNumber, formatQuantity } from './format-number.js';
+import { say } from './language.js';
 import { linearAxis } from './ticks.js';
 
 /** Shares of the record that the table lists [%]. */
@@ -22,17 +23,16 @@ export function durationCurve(outcome: Outcome): Chart {
   return {
     id: 'durationCurve',
     finding: finding(outcome, top),
-    caption: 'Needed kvar over the share of the record with at least that need; the steps are the bank’s levels.',
-    sentence:
-      `Needed kvar for ${target}, sorted: at most ${formatQuantity(maxKvar, 'kvar')}, ` +
-      `${formatQuantity(p99Kvar, 'kvar')} or more for 1 % of the record, ${formatQuantity(p95Kvar, 'kvar')} or more for 5 %. ` +
-      `The bank’s levels reach ${formatQuantity(top, 'kvar')}.`,
+    caption: say`Needed kvar over the share of the record with at least that need; the steps are the bank’s levels.`,
+    sentence: say`Needed kvar for ${target}, sorted: at most ${formatQuantity(maxKvar, 'kvar')},
+        ${formatQuantity(p99Kvar, 'kvar')} or more for 1 % of the record, ${formatQuantity(p95Kvar, 'kvar')} or more for 5 %.
+        The bank’s levels reach ${formatQuantity(top, 'kvar')}.`,
     x: {
-      ...linearAxis('share of the record with at least this need', '%', { least: 0, most: 100 }, 4),
+      ...linearAxis(say`share of the record with at least this need`, '%', { least: 0, most: 100 }, 4),
       to: 100,
       ticks: quarters(),
     },
-    y: linearAxis('needed', 'kvar', { least: 0, most: Math.max(maxKvar, top) }),
+    y: linearAxis(say`needed`, 'kvar', { least: 0, most: Math.max(maxKvar, top) }),
     equalScales: false,
     series: [
       { part: 'bank', shape: 'washStair', x: share, y: reached },
@@ -42,9 +42,9 @@ export function durationCurve(outcome: Outcome): Chart {
     marks: [...pointMarks(outcome), ...levelMarks(levels, top)],
     table: {
       columns: [
-        { head: 'share of the record', right: true },
-        { head: 'need at least', right: true },
-        { head: 'level that fits under it', right: true },
+        { head: say`share of the record`, right: true },
+        { head: say`need at least`, right: true },
+        { head: say`level that fits under it`, right: true },
       ],
       rows: LISTED_PCT.map((pct) => {
         const kvar = need[Math.round((pct / 100) * (n - 1))]!;
@@ -88,11 +88,11 @@ function finding(outcome: Outcome, top: number): string {
   const { maxKvar } = outcome.result.requirement;
   const most = formatQuantity(maxKvar, 'kvar');
   const bank = formatQuantity(top, 'kvar');
-  if (maxKvar <= 1e-9) return 'No interval of the record needs a bank';
-  if (top === 0) return `Up to ${most} are needed and no bank stands against it`;
+  if (maxKvar <= 1e-9) return say`No interval of the record needs a bank`;
+  if (top === 0) return say`Up to ${most} are needed and no bank stands against it`;
   return top >= maxKvar
-    ? `${bank} reach the greatest need, ${most}`
-    : `${bank} stand against a greatest need of ${most}`;
+    ? say`${bank} reach the greatest need, ${most}`
+    : say`${bank} stand against a greatest need of ${most}`;
 }
 
 /** The greatest level at or below a need. */
@@ -110,7 +110,7 @@ function pointMarks(outcome: Outcome): Mark[] {
   const { maxKvar, p99Kvar, p95Kvar } = outcome.result.requirement;
   if (maxKvar <= 1e-9) return [];
   const points = [
-    { x: 0, y: maxKvar, text: `maximum ${formatNumber(maxKvar)}` },
+    { x: 0, y: maxKvar, text: say`maximum ${formatNumber(maxKvar)}` },
     { x: 1, y: p99Kvar, text: `P99 ${formatNumber(p99Kvar)}` },
     { x: 5, y: p95Kvar, text: `P95 ${formatNumber(p95Kvar)}` },
   ];
@@ -121,6 +121,11 @@ function levelMarks(levelsKvar: readonly number[], top: number): Mark[] {
   return levelsKvar.map((kvar) => ({
     kind: 'level',
     y: kvar,
-    text: kvar === top && top > 0 ? `${formatNumber(kvar)} all stages` : kvar === 0 ? '0 none in' : formatNumber(kvar),
+    text:
+      kvar === top && top > 0
+        ? say`${formatNumber(kvar)} all stages`
+        : kvar === 0
+          ? say`0 none in`
+          : formatNumber(kvar),
   }));
 }

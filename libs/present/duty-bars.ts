@@ -2,6 +2,7 @@ import { type Corner, type Duty, NEAR_RATIO } from '#libs/engine/index.js';
 import type { BarFigure } from './bar-figure.js';
 import { dutyName as fullName } from './figure-words.js';
 import { formatApart, formatNumber, formatQuantity, GAP } from './format-number.js';
+import { plainName } from './plain-name.js';
 import { verdictWords } from './verdict-words.js';
 
 /** Bars end here and are drawn broken beyond [%]. */
@@ -78,6 +79,25 @@ function shareWords(duty: Duty): string {
 export function cornerWords(corner: Corner | null): string {
   if (corner === null) return '–';
   const { faultLevelMva, capacitanceFactor, inductanceFactor, dampingKw } = corner;
+  const own = `${formatQuantity(faultLevelMva, 'MVA', 'given')}, ${toleranceWords(capacitanceFactor, inductanceFactor)}, damping ${formatQuantity(dampingKw, 'kW')}`;
+  return [own, ...standingWords(corner)].join(', ');
+}
+
+/**
+ * How the network stands in a corner, and at which end of their tolerance its own capacitors are.
+ * @param corner where a value was met
+ * @returns parts to be joined; none in the normal standing with capacitors as their nameplates say
+ */
+export function standingWords({ standing, networkCapacitanceFactor, networkInductanceFactor }: Corner): string[] {
+  return [
+    ...(standing === undefined ? [] : [plainName(standing)]),
+    ...(networkCapacitanceFactor === undefined
+      ? []
+      : [`network’s capacitors ${toleranceWords(networkCapacitanceFactor, networkInductanceFactor ?? 1)}`]),
+  ];
+}
+
+function toleranceWords(capacitanceFactor: number, inductanceFactor: number): string {
   const times = (factor: number) => `×${GAP}${formatNumber(factor, 'given')}`;
-  return `${formatQuantity(faultLevelMva, 'MVA', 'given')}, C ${times(capacitanceFactor)}, L ${times(inductanceFactor)}, damping ${formatQuantity(dampingKw, 'kW')}`;
+  return `C ${times(capacitanceFactor)}, L ${times(inductanceFactor)}`;
 }

@@ -1,13 +1,16 @@
 import type { Remark } from '#libs/engine/index.js';
+import { engineName } from './engine-name.js';
+import { capital } from './first-letter.js';
 import { formatFixed, formatQuantity, formatShare, GAP } from './format-number.js';
+import { say, words } from './language.js';
 
 type Effect = NonNullable<Remark['effect']>;
 
 /** Amounts of money an assumption may move. */
-export const MONEY_FIGURES: Record<string, string> = {
+export const MONEY_FIGURES: Record<string, string> = words({
   'money.npv': 'net present value',
   'money.savingPerYear': 'saving a year',
-};
+});
 
 /**
  * What an assumption moves, if it is wrong.
@@ -16,24 +19,21 @@ export const MONEY_FIGURES: Record<string, string> = {
  */
 export function effectWords(effect: Effect): string {
   const moved = capital(movedWords(effect));
-  return effect.changesVerdict ? `${moved}, and the verdict changes` : moved;
+  return effect.changesVerdict ? say`${moved}, and the verdict changes` : moved;
 }
 
 function movedWords({ figure, low, high }: Effect): string {
-  if (figure === '') return 'no row moves';
-  const duty = /^duties\.(.+)$/.exec(figure)?.[1];
-  if (duty !== undefined) {
-    const [least, most] = [low, high].map((ratio) => `${formatShare(100 * ratio)}${GAP}%`);
-    return least === most ? `${duty} stays at ${most} of its limit` : `${duty} ${least} to ${most} of its limit`;
+  if (figure === '') return say`no row moves`;
+  const row = /^duties\.(.+)$/.exec(figure)?.[1];
+  if (row !== undefined) {
+    const duty = engineName(row);
+    const [least = '', most = ''] = [low, high].map((ratio) => `${formatShare(100 * ratio)}${GAP}%`);
+    return least === most ? say`${duty} stays at ${most} of its limit` : say`${duty} ${least} to ${most} of its limit`;
   }
   const money = MONEY_FIGURES[figure];
-  const [least, most] = [low, high].map((value) =>
+  const [least = '', most = ''] = [low, high].map((value) =>
     money === undefined ? formatQuantity(value, '') : formatFixed(value, 0),
   );
-  const name = money ?? figure;
-  return least === most ? `${name} stays at ${most}` : `${name} ${least} to ${most}`;
-}
-
-function capital(text: string): string {
-  return text.charAt(0).toUpperCase() + text.slice(1);
+  const name = money ?? engineName(figure);
+  return least === most ? say`${name} stays at ${most}` : say`${name} ${least} to ${most}`;
 }

@@ -1,5 +1,6 @@
 import type { EstimateOutcome } from '#libs/engine/index.js';
 import { formatNumber, formatQuantity } from './format-number.js';
+import { say } from './language.js';
 import { formatMonth } from './local-stamp.js';
 
 /**
@@ -13,14 +14,14 @@ export function estimateSpan({ result }: EstimateOutcome): string {
   const parts: string[] = [];
   if (first !== undefined && last !== undefined) {
     const span =
-      months.length === 1 ? formatMonth(first.month) : `${formatMonth(first.month)} to ${formatMonth(last.month)}`;
-    parts.push(`${months.length} ${months.length === 1 ? 'bill' : 'bills'}, ${span}`);
+      months.length === 1 ? formatMonth(first.month) : say`${formatMonth(first.month)} to ${formatMonth(last.month)}`;
+    parts.push(`${months.length} ${months.length === 1 ? say`bill` : say`bills`}, ${span}`);
   }
   if (equipment !== null) {
     const count = equipment.rows.length;
-    parts.push(`an equipment list of ${count} ${count === 1 ? 'entry' : 'entries'}`);
+    parts.push(say`an equipment list of ${count} ${count === 1 ? say`entry` : say`entries`}`);
   }
-  return parts.join(', and ');
+  return parts.join(say`, and `);
 }
 
 /**
@@ -35,16 +36,18 @@ export function estimateFigures({ result, site }: EstimateOutcome): [label: stri
   return [
     ...(lowerKvar === null
       ? []
-      : [['needed, lower bound', formatQuantity(lowerKvar, 'kvar')] satisfies [string, string]]),
+      : [[say`needed, lower bound`, formatQuantity(lowerKvar, 'kvar')] satisfies [string, string]]),
     ...(upperKvar === null
       ? []
-      : [['needed, upper bound', formatQuantity(upperKvar, 'kvar')] satisfies [string, string]]),
-    ...(listKvar === null ? [] : [['needed by the list', formatQuantity(listKvar, 'kvar')] satisfies [string, string]]),
-    ['sized by', formatQuantity(sizedKvar, 'kvar')],
-    ['effective', formatQuantity(result.bank.effectiveKvar, 'kvar')],
-    ['target', formatNumber(site.targetPowerFactor, 'given')],
-    ['lowest month before', factors.length === 0 ? '–' : formatNumber(Math.min(...factors))],
-    ['voltage distortion', distortion === undefined ? '–' : formatQuantity(distortion.value, '%')],
-    ['its limit', distortion === undefined ? '–' : formatQuantity(distortion.limit, '%', 'given')],
+      : [[say`needed, upper bound`, formatQuantity(upperKvar, 'kvar')] satisfies [string, string]]),
+    ...(listKvar === null
+      ? []
+      : [[say`needed by the list`, formatQuantity(listKvar, 'kvar')] satisfies [string, string]]),
+    [say`sized by`, formatQuantity(sizedKvar, 'kvar')],
+    [say`effective`, formatQuantity(result.bank.effectiveKvar, 'kvar')],
+    [say`target`, formatNumber(site.targetPowerFactor, 'given')],
+    [say`lowest month before`, factors.length === 0 ? '–' : formatNumber(Math.min(...factors))],
+    [say`voltage distortion`, distortion === undefined ? '–' : formatQuantity(distortion.value, '%')],
+    [say`its limit`, distortion === undefined ? '–' : formatQuantity(distortion.limit, '%', 'given')],
   ];
 }

@@ -1,8 +1,10 @@
 import type { Duty, Figure } from '#libs/engine/index.js';
+import { engineName } from './engine-name.js';
 import { formatNumber, GAP, inPoints, MINUS } from './format-number.js';
+import { say, words } from './language.js';
 
 /** What a figure is called; `[*]` stands for a group's number. */
-const LABELS: Readonly<Record<string, string>> = {
+const LABELS: Readonly<Record<string, string>> = words({
   'record.powerFactorLagging': 'power factor of the record, lagging kvarh only',
   'record.powerFactorNet': 'power factor of the record, leading kvarh taken off',
   'estimate.months[*].lowerKvar': 'lower bound of the need, estimated',
@@ -58,7 +60,7 @@ const LABELS: Readonly<Record<string, string>> = {
   'money.irrPct': 'internal rate of return, between two rates next to it',
   'money.annuityPerYear': 'net present value as an equal amount a year',
   'loads.neutralA': 'neutral current of the single-phase loads’ third harmonics',
-};
+});
 
 const SYMBOL = /[\p{L}_][\p{L}\d_]*/gu;
 
@@ -83,7 +85,7 @@ export function labelOf(id: string, duties: readonly Duty[]): string {
   const at = Number(place?.[1] ?? 0);
   if (id.startsWith('duties[')) {
     const duty = duties[at];
-    return duty === undefined ? id : `${dutyName(duty)}, share of its limit`;
+    return duty === undefined ? id : say`${dutyName(duty)}, share of its limit`;
   }
   const label = LABELS[id.replace(/\[\d+\]/, '[*]')];
   if (label === undefined) return id;
@@ -91,8 +93,8 @@ export function labelOf(id: string, duties: readonly Duty[]): string {
 }
 
 function placeWord(id: string): string {
-  if (id.startsWith('estimate.months')) return 'bill';
-  return id.startsWith('estimate.equipment') ? 'entry' : 'group';
+  if (id.startsWith('estimate.months')) return say`bill`;
+  return id.startsWith('estimate.equipment') ? say`entry` : say`group`;
 }
 
 /**
@@ -101,9 +103,9 @@ function placeWord(id: string): string {
  * @returns "capacitor current, group 1", "harmonic voltage, order 19"
  */
 export function dutyName(duty: Duty): string {
-  const group = duty.group === null ? '' : `, group${GAP}${duty.group + 1}`;
-  const order = duty.orderH === null ? '' : `, order${GAP}${formatNumber(duty.orderH, 'given')}`;
-  return `${duty.name}${group}${order}`;
+  const group = duty.group === null ? '' : say`, group\u00a0${duty.group + 1}`;
+  const order = duty.orderH === null ? '' : say`, order\u00a0${formatNumber(duty.orderH, 'given')}`;
+  return `${engineName(duty.name)}${group}${order}`;
 }
 
 /**

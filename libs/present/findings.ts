@@ -1,8 +1,10 @@
 import type { Duty, EstimateResult, Remark, Result, Verdict } from '#libs/engine/index.js';
 import { remark } from '#libs/engine/index.js';
 import { effectWords } from './effect-words.js';
+import { engineName } from './engine-name.js';
 import { dutyName } from './figure-words.js';
 import { formatApart, formatQuantity, GAP } from './format-number.js';
+import { say, words } from './language.js';
 import { FINDING_LEVELS, type FindingLevel } from './message.js';
 import { messageOf, remarkConsequence, remarkSubject } from './remark-words.js';
 
@@ -64,9 +66,15 @@ export function blocking(list: readonly Finding[]): Finding[] {
 export function findingCount(list: readonly Finding[]): string {
   const parts = FINDING_LEVELS.flatMap((level) => {
     const count = list.filter((finding) => finding.level === level).length;
-    return count === 0 ? [] : [`${countWord(count)} ${level === 'blocks issue' && count > 1 ? 'block issue' : level}`];
+    return count === 0
+      ? []
+      : [
+          level === 'blocks issue' && count > 1
+            ? say`${countWord(count)} block issue`
+            : `${countWord(count)} ${levelWords(level)}`,
+        ];
   });
-  return parts.length === 0 ? 'none' : parts.join(', ');
+  return parts.length === 0 ? say`none` : parts.join(', ');
 }
 
 /**
@@ -81,7 +89,36 @@ export function findingNumbers({ value, limit, unit }: Finding): { value: string
   return { value: `${shown.value}${GAP}${unit}`.trim(), limit: `${shown.limit}${GAP}${unit}`.trim() };
 }
 
-const WORDS = ['no', 'one', 'two', 'three', 'four', 'five', 'six', 'seven', 'eight', 'nine', 'ten', 'eleven', 'twelve'];
+const LEVELS: Record<FindingLevel, string> = words({
+  'blocks issue': 'blocks issue',
+  'to be accepted': 'to be accepted',
+  'to be noted': 'to be noted',
+  information: 'information',
+});
+
+/**
+ * A level of findings as it is printed.
+ * @param level in the catalogue
+ */
+export function levelWords(level: FindingLevel): string {
+  return LEVELS[level];
+}
+
+const WORDS = words([
+  'no',
+  'one',
+  'two',
+  'three',
+  'four',
+  'five',
+  'six',
+  'seven',
+  'eight',
+  'nine',
+  'ten',
+  'eleven',
+  'twelve',
+]);
 
 /**
  * A small count as a word.
@@ -103,7 +140,7 @@ function remarkFinding(said: Remark): Finding {
     value: typeof value === 'number' ? value : null,
     limit: typeof value === 'number' && typeof limit === 'number' ? limit : null,
     unit: said.unit ?? '',
-    source: said.source === 'practice' ? 'common practice' : (said.source ?? ''),
+    source: said.source === 'practice' ? say`common practice` : engineName(said.source ?? ''),
     consequence: remarkConsequence(said),
   };
 }

@@ -1,3 +1,5 @@
+import { say, spokenCatalogue } from './language.js';
+
 /** U+00A0: the gap between thousands and between a number and its unit; never a place to break a line. */
 export const GAP = '\u00a0';
 /** U+2212 */
@@ -6,7 +8,7 @@ export const MINUS = '\u2212';
 /** A decimal mark that readers know; thousands are apart by a gap in either case, so that no number reads two ways. */
 export type DecimalMark = '.' | ',';
 
-let shownMark: DecimalMark = '.';
+let pageMark: DecimalMark = '.';
 
 /**
  * Chooses the decimal mark of everything printed from here on. A page does so once, before it shows anything; paper,
@@ -14,7 +16,12 @@ let shownMark: DecimalMark = '.';
  * @param mark the reader's
  */
 export function setDecimalMark(mark: DecimalMark): void {
-  shownMark = mark;
+  pageMark = mark;
+}
+
+/** The mark of the language in force; without one the page's. */
+function decimalMark(): DecimalMark {
+  return spokenCatalogue()?.decimalMark ?? pageMark;
 }
 
 /**
@@ -22,9 +29,8 @@ export function setDecimalMark(mark: DecimalMark): void {
  * @param text printed with points
  */
 export function inShownMark(text: string): string {
-  return shownMark === '.'
-    ? text
-    : text.replace(/(?<![\d.])(\d+(?:\u00a0\d{3})*)\.(?=\d+(?![\d.]))/g, `$1${shownMark}`);
+  const mark = decimalMark();
+  return mark === '.' ? text : text.replace(/(?<![\d.])(\d+(?:\u00a0\d{3})*)\.(?=\d+(?![\d.]))/g, `$1${mark}`);
 }
 
 /**
@@ -32,7 +38,16 @@ export function inShownMark(text: string): string {
  * @param text printed here
  */
 export function inPoints(text: string): string {
-  return shownMark === '.' ? text : text.replace(/(?<=\d),(?=\d)/g, '.');
+  return decimalMark() === '.' ? text : text.replace(/(?<=\d),(?=\d)/g, '.');
+}
+
+/**
+ * A formula, or a working with its values, as a paper prints it: with the language's decimal mark, and a semicolon
+ * between arguments where that mark is the comma.
+ * @param text arithmetic with points
+ */
+export function printedArithmetic(text: string): string {
+  return decimalMark() === '.' ? text : inShownMark(text.replaceAll(', ', '; '));
 }
 
 /** Digits a computed number is printed with; never fewer than its whole units. */
@@ -100,7 +115,7 @@ function trimmed(text: string): string {
 function grouped(plain: string): string {
   const [whole = '', fraction] = plain.split('.');
   const apart = whole.replace(/\B(?=(\d{3})+$)/g, GAP);
-  return fraction === undefined ? apart : `${apart}${shownMark}${fraction}`;
+  return fraction === undefined ? apart : `${apart}${decimalMark()}${fraction}`;
 }
 
 /**
@@ -153,7 +168,7 @@ function withDigits(value: number, digits: number): string {
 }
 
 function decimalsOf(text: string): number {
-  const at = text.indexOf(shownMark);
+  const at = text.indexOf(decimalMark());
   return at < 0 ? 0 : text.length - at - 1;
 }
 
@@ -219,5 +234,6 @@ const UNIT_OF_SUFFIX: Record<string, string> = {
  */
 export function unitOfName(name: string): string {
   const lastWord = /[A-Z][a-z]*$/.exec(name)?.[0] ?? '';
-  return UNIT_OF_SUFFIX[lastWord] ?? '';
+  const unit = UNIT_OF_SUFFIX[lastWord] ?? '';
+  return unit === 'days' ? say`days` : unit;
 }

@@ -1,4 +1,4 @@
-import { GAP } from './format-number.js';
+import { say } from './language.js';
 
 /**
  * How a group of stages is told of.
@@ -6,5 +6,5 @@ import { GAP } from './format-number.js';
  * @returns "group 1"
  */
 export function groupName(group: number): string {
-  return `group${GAP}${group + 1}`;
+  return say`group\u00a0${group + 1}`;
 }

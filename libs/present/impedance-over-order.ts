@@ -12,6 +12,7 @@ import {
 } from '#libs/engine/index.js';
 import type { Axis, Chart, Mark } from './chart.js';
 import { formatNumber, formatQuantity } from './format-number.js';
+import { say } from './language.js';
 import { linearAxis, logAxis } from './ticks.js';
 
 const LEAST_END_H = 21;
@@ -124,7 +125,7 @@ function drawn({ scan, present, name, endH, levelKvar }: Drawing, scale: SharedS
   const none = scan.levels[0]!;
   const full = scan.levels.findLast((level) => level.levelKvar <= levelKvar + 1e-6) ?? none;
   const isAll = full === scan.levels.at(-1);
-  const which = isAll ? 'all stages in' : formatQuantity(full.levelKvar, 'kvar');
+  const which = isAll ? say`all stages in` : formatQuantity(full.levelKvar, 'kvar');
   const milli = (ohm: Float64Array) => ohm.map((value) => value * 1000);
   const withBank = scan.levels.slice(1);
   const top = extreme(withBank, scan.ordersH.length, Math.max);
@@ -132,11 +133,11 @@ function drawn({ scan, present, name, endH, levelKvar }: Drawing, scale: SharedS
   const peak = full === none ? null : full.peak;
   return {
     id: 'impedanceOverOrder',
-    finding: `${name}: ${peak === null ? `no peak with ${which}` : `${which}, the peak lies at order ${formatNumber(peak.orderH)}`}`,
-    caption: 'Impedance at the bus, nominal case.',
+    finding: `${name}: ${peak === null ? say`no peak with ${which}` : say`${which}, the peak lies at order ${formatNumber(peak.orderH)}`}`,
+    caption: say`Impedance at the bus, nominal case.`,
     sentence: sentence(scan, name, present),
     x: orderAxis(endH, present),
-    y: logAxis('impedance', 'mΩ', { least: scale.leastOhm * 1000, most: scale.mostOhm * 1000 }),
+    y: logAxis(say`impedance`, 'mΩ', { least: scale.leastOhm * 1000, most: scale.mostOhm * 1000 }),
     equalScales: false,
     series: [
       ...(withBank.length > 0
@@ -149,7 +150,7 @@ function drawn({ scan, present, name, endH, levelKvar }: Drawing, scale: SharedS
     ],
     marks: [...peakMarks(withBank, present), ...ring(peak, endH)],
     table: {
-      columns: ['level kvar', 'peak at order', 'peak mΩ'].map((head) => ({ head, right: true })),
+      columns: [say`level kvar`, say`peak at order`, say`peak mΩ`].map((head) => ({ head, right: true })),
       rows: scan.levels.map(({ levelKvar, peak: own }) => [
         formatNumber(levelKvar),
         own === null ? '–' : formatNumber(own.orderH),
@@ -184,7 +185,7 @@ function peakMarks(levels: Scan['levels'], present: readonly number[]): Mark[] {
 }
 
 function orderAxis(endH: number, present: readonly number[]): Axis {
-  const axis = linearAxis('harmonic order', '', { least: 0, most: endH });
+  const axis = linearAxis(say`harmonic order`, '', { least: 0, most: endH });
   const odd = Array.from({ length: Math.ceil(endH / 2) }, (_, i) => 2 * i + 1).filter((order) => order <= endH);
   const orders = [...new Set([...odd, ...present])].filter((order) => order <= endH).sort((a, b) => a - b);
   const ticks = orders.map((at) => ({ at, text: formatNumber(at, 'given'), strong: present.includes(at) }));
@@ -193,13 +194,11 @@ function orderAxis(endH: number, present: readonly number[]): Axis {
 
 function sentence(scan: Scan, name: string, present: readonly number[]): string {
   const full = scan.levels.at(-1)!;
-  const orders = present.length === 0 ? 'No order is present.' : `Orders present: ${present.join(', ')}.`;
+  const orders = present.length === 0 ? say`No order is present.` : say`Orders present: ${present.join(', ')}.`;
   const peaks = scan.levels.slice(1).flatMap(({ peak }) => (peak === null ? [] : [peak.orderH]));
   if (peaks.length === 0 || full.peak === null)
-    return `Impedance at the bus, ${name}. ${orders} The bank makes no peak.`;
-  return (
-    `Impedance at the bus, ${name}. ${orders} The levels’ peaks lie between order ${formatNumber(Math.min(...peaks))} and ` +
-    `${formatNumber(Math.max(...peaks))}; with all stages in, ${formatQuantity(full.peak.impedanceOhm * 1000, 'mΩ')} at order ` +
-    `${formatNumber(full.peak.orderH)}.`
-  );
+    return say`Impedance at the bus, ${name}. ${orders} The bank makes no peak.`;
+  return say`Impedance at the bus, ${name}. ${orders} The levels’ peaks lie between order ${formatNumber(Math.min(...peaks))} and
+      ${formatNumber(Math.max(...peaks))}; with all stages in, ${formatQuantity(full.peak.impedanceOhm * 1000, 'mΩ')} at order
+      ${formatNumber(full.peak.orderH)}.`;
 }

@@ -6,8 +6,9 @@ import {
   maintenanceChecks,
   type Outcome,
 } from '#libs/engine/index.js';
-import { formatNumber, formatQuantity, GAP } from './format-number.js';
+import { formatNumber, formatQuantity } from './format-number.js';
 import { groupName } from './group-name.js';
+import { say, words } from './language.js';
 
 /** A line of the maintenance plan. */
 export interface MaintenanceLine {
@@ -19,7 +20,7 @@ export interface MaintenanceLine {
 }
 
 /** What is done, and what it is rejected for where no number says it. */
-const WORDS: Record<CheckName, { check: string; rejected?: string }> = {
+const WORDS: Record<CheckName, { check: string; rejected?: string }> = words({
   capacitance: { check: 'capacitance of each delta phase, discharged and isolated' },
   stageCurrent: { check: 'current of each phase of a stage, as at nominal voltage' },
   dischargeTime: { check: 'voltage left after switching off' },
@@ -38,14 +39,14 @@ const WORDS: Record<CheckName, { check: string; rejected?: string }> = {
     rejected: 'any that differs and was not written down',
   },
   record: { check: 'power factor of the month against section 8', rejected: 'a month below the target' },
-};
+});
 
-const BASES: Record<CheckBasis, string> = {
+const BASES: Record<CheckBasis, string> = words({
   computed: 'computed: the verdict turns there',
   standard: 'standard',
   limit: 'limit of the bus',
   practice: 'common practice',
-};
+});
 
 /**
  * Checks of a bank in service, each with its interval, what is expected and what is rejected.
@@ -56,7 +57,7 @@ export function maintenanceLines(outcome: Outcome | EstimateOutcome): Maintenanc
   const several = outcome.bank.groups.length > 1;
   return maintenanceChecks(outcome).map((check) => ({
     check: nameOf(outcome, check, several),
-    every: `${formatNumber(check.everyMonths, 'whole')}${GAP}months`,
+    every: say`${formatNumber(check.everyMonths, 'whole')}\u00a0months`,
     expected: expectedOf(outcome, check),
     rejected: rejectedOf(check),
     basis: basisOf(check),
@@ -68,7 +69,7 @@ function nameOf({ result }: Outcome | EstimateOutcome, { check, group }: Mainten
   if (group === null) return words;
   const after =
     check === 'dischargeTime'
-      ? `, ${formatQuantity(result.charge.stages[group]!.dischargeWithinS, 's', 'given')} later`
+      ? say`, ${formatQuantity(result.charge.stages[group]!.dischargeWithinS, 's', 'given')} later`
       : '';
   return `${words}${after}${several ? `, ${groupName(group)}` : ''}`;
 }
@@ -76,15 +77,15 @@ function nameOf({ result }: Outcome | EstimateOutcome, { check, group }: Mainten
 /** Without a stated resistor the one that the plan asks for is expected. */
 function expectedOf({ result }: Outcome | EstimateOutcome, { check, group, expected, unit }: MaintenanceCheck): string {
   if (check === 'dischargeResistor' && expected === null && group !== null) {
-    return `at most ${formatQuantity(result.charge.stages[group]!.requiredOhm, unit)}`;
+    return say`at most ${formatQuantity(result.charge.stages[group]!.requiredOhm, unit)}`;
   }
   return expected === null ? '–' : formatQuantity(expected, unit);
 }
 
 function rejectedOf({ check, least, most, unit }: MaintenanceCheck): string {
   const parts = [
-    ...(least === null ? [] : [`below ${formatQuantity(least, unit)}`]),
-    ...(most === null ? [] : [`above ${formatQuantity(most, unit)}`]),
+    ...(least === null ? [] : [say`below ${formatQuantity(least, unit)}`]),
+    ...(most === null ? [] : [say`above ${formatQuantity(most, unit)}`]),
   ];
   return parts.length > 0 ? parts.join(', ') : (WORDS[check].rejected ?? '–');
 }

@@ -1,6 +1,7 @@
 import type { MarginMap } from '#libs/engine/index.js';
 import type { CellFill, Chart, Mark } from './chart.js';
 import { formatNumber, formatShare } from './format-number.js';
+import { say } from './language.js';
 
 /** Shares of the limit at which a cell's fill changes [%]; over a limit only beyond rounding. */
 const QUIET_FROM_PCT = 50;
@@ -25,16 +26,17 @@ export function marginMap(
   const over = all.filter(({ kvar, shares }) => kvar > 0 && shares.some((share) => share > SOLID_FROM_PCT)).length;
   const heads = margins.ordersH.map((order) => formatNumber(order, 'given'));
   const rows = levels.map(({ kvar, shares }) => [formatNumber(kvar), ...shares.map(formatShare)]);
-  const left = levels.length < all.length ? ` The ${levels.length} of ${all.length} levels nearest their limits.` : '';
+  const left =
+    levels.length < all.length ? say` The ${levels.length} of ${all.length} levels nearest their limits.` : '';
   const axis = { label: '', unit: '', scale: 'linear' as const, from: 0 };
   return {
     id: 'marginMap',
     finding:
       over === 0
-        ? `${name}: every level within its limits`
-        : `${name}: ${over} of ${all.length - 1} levels over a limit`,
-    caption: `Harmonic voltage, % of its limit, worst corner; rows are levels in kvar, columns orders.${left}`,
-    sentence: `Harmonic voltage as a share of its limit for ${levels.length} levels and ${heads.length} orders; the table holds every number.`,
+        ? say`${name}: every level within its limits`
+        : say`${name}: ${over} of ${all.length - 1} levels over a limit`,
+    caption: say`Harmonic voltage, % of its limit, worst corner; rows are levels in kvar, columns orders.${left}`,
+    sentence: say`Harmonic voltage as a share of its limit for ${levels.length} levels and ${heads.length} orders; the table holds every number.`,
     x: { ...axis, to: heads.length, ticks: heads.map((text, at) => ({ at: at + 0.5, text })) },
     y: { ...axis, unit: 'kvar', to: rows.length, ticks: rows.map((row, at) => ({ at: at + 0.5, text: row[0]! })) },
     equalScales: false,

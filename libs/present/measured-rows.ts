@@ -1,8 +1,9 @@
 import type { MeasuredCheck } from '#libs/engine/index.js';
 import { formatNumber, formatQuantity, formatRange } from './format-number.js';
+import { say, words } from './language.js';
 
 /** Heads over the cells of `measuredRows`. */
-export const MEASURED_HEADS = [
+export const MEASURED_HEADS = words([
   'order',
   'quantity',
   'measured',
@@ -10,7 +11,7 @@ export const MEASURED_HEADS = [
   'over all corners',
   'difference',
   'stands',
-] as const;
+] as const);
 
 /**
  * How a measurement stands against the model, in a few words.
@@ -18,11 +19,11 @@ export const MEASURED_HEADS = [
  * @returns without a full stop
  */
 export function measuredFinding({ rows, use }: MeasuredCheck): string {
-  if (use === 'fit') return 'the loads’ currents are fitted to it';
+  if (use === 'fit') return say`the loads’ currents are fitted to it`;
   const off = rows.filter(({ standing }) => standing !== 'within').length;
   return off === 0
-    ? 'every reading lies within the model’s corners'
-    : `${off} readings lie outside the model’s corners`;
+    ? say`every reading lies within the model’s corners`
+    : say`${off} readings lie outside the model’s corners`;
 }
 
 /**
@@ -32,9 +33,9 @@ export function measuredFinding({ rows, use }: MeasuredCheck): string {
  */
 export function measuredNote({ levelKvar, use }: MeasuredCheck): string {
   return (
-    `With ${formatQuantity(levelKvar, 'kvar')} connected. A reading is never added to the model’s sources; it stands ` +
-    'outside where it passes the corners by more than a tenth.' +
-    (use === 'fit' ? ' The loads’ currents were scaled to meet it, so that agreement is no check of the model.' : '')
+    say`With ${formatQuantity(levelKvar, 'kvar')} connected. A reading is never added to the model’s sources; it stands
+      outside where it passes the corners by more than a tenth.` +
+    (use === 'fit' ? say` The loads’ currents were scaled to meet it, so that agreement is no check of the model.` : '')
   );
 }
 

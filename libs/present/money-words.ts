@@ -1,5 +1,6 @@
 import type { Alternative, Bill, BillMonth, Money, MoneyPapers, SearchProof } from '#libs/engine/index.js';
 import { formatFixed, formatNumber, formatQuantity, GAP } from './format-number.js';
+import { say, words } from './language.js';
 import { formatDate } from './local-stamp.js';
 import { plainName } from './plain-name.js';
 
@@ -7,7 +8,9 @@ import { plainName } from './plain-name.js';
 const MOST_DECIMALS = 6;
 
 /** What every saving is called. */
-export const NO_GUARANTEE = 'an estimate, not a guarantee';
+export function noGuarantee(): string {
+  return say`an estimate, not a guarantee`;
+}
 
 /**
  * An amount with its currency.
@@ -39,9 +42,9 @@ export function billDecimals({ tariff }: MoneyPapers): number {
 export function formatPayback(years: number): string {
   const tenths = Math.round(120 * years);
   const whole = Math.floor(tenths / 120);
-  const months = `${((tenths - 120 * whole) / 10).toFixed(1)}${GAP}months`;
+  const months = say`${formatFixed((tenths - 120 * whole) / 10, 1)}\u00a0months`;
   if (whole === 0) return months;
-  return `${whole}${GAP}${whole === 1 ? 'year' : 'years'}${GAP}${months}`;
+  return `${whole}${GAP}${whole === 1 ? say`year` : say`years`}${GAP}${months}`;
 }
 
 /**
@@ -52,8 +55,8 @@ export function formatPayback(years: number): string {
  */
 export function paybackWords(money: Money, horizonYears: number): string {
   if (money.paybackYears !== null) return formatPayback(money.paybackYears);
-  if (money.paybackReason === 'no capital') return 'nothing has to be paid first';
-  return `not within ${formatQuantity(horizonYears, 'years', 'given')}`;
+  if (money.paybackReason === 'no capital') return say`nothing has to be paid first`;
+  return say`not within ${formatQuantity(horizonYears, say`years`, 'given')}`;
 }
 
 /**
@@ -62,9 +65,9 @@ export function paybackWords(money: Money, horizonYears: number): string {
  * @returns "12.3 % a year", or a reason
  */
 export function returnWords(money: Money): string {
-  if (money.irrPct !== null) return `${formatQuantity(money.irrPct, '%')} a year`;
-  if (money.irrReason === 'several sign changes') return 'none: more than one rate brings the value to 0';
-  return 'none: no rate brings the value to 0';
+  if (money.irrPct !== null) return say`${formatQuantity(money.irrPct, '%')} a year`;
+  if (money.irrReason === 'several sign changes') return say`none: more than one rate brings the value to 0`;
+  return say`none: no rate brings the value to 0`;
 }
 
 /**
@@ -73,11 +76,11 @@ export function returnWords(money: Money): string {
  * @returns a sentence
  */
 export function tariffWords({ tariff }: MoneyPapers): string {
-  if (tariff === null) return 'No tariff was given.';
+  if (tariff === null) return say`No tariff was given.`;
   const count = tariff.clauses?.length ?? 0;
-  const clauses = `${count} ${count === 1 ? 'clause' : 'clauses'}`;
-  const tax = tariff.taxPct === undefined ? 'without tax' : `tax ${formatQuantity(tariff.taxPct, '%', 'given')}`;
-  return `Tariff: ${named(tariff.name)}, ${clauses}, ${tax}.`;
+  const clauses = `${count} ${count === 1 ? say`clause` : say`clauses`}`;
+  const tax = tariff.taxPct === undefined ? say`without tax` : say`tax ${formatQuantity(tariff.taxPct, '%', 'given')}`;
+  return say`Tariff: ${named(tariff.name)}, ${clauses}, ${tax}.`;
 }
 
 /**
@@ -86,16 +89,16 @@ export function tariffWords({ tariff }: MoneyPapers): string {
  * @returns a sentence or two
  */
 export function priceBookWords({ prices }: MoneyPapers): string {
-  if (prices === null) return 'No prices were given, so the bank itself is not priced.';
+  if (prices === null) return say`No prices were given, so the bank itself is not priced.`;
   const { validFrom, validTo } = prices;
   const dates = [
-    ...(validFrom === undefined ? [] : [`from ${formatDate(validFrom)}`]),
-    ...(validTo === undefined ? [] : [`until ${formatDate(validTo)}`]),
+    ...(validFrom === undefined ? [] : [say`from ${formatDate(validFrom)}`]),
+    ...(validTo === undefined ? [] : [say`until ${formatDate(validTo)}`]),
   ];
-  const valid = dates.length === 0 ? 'without a date' : `valid ${dates.join(' ')}`;
+  const valid = dates.length === 0 ? say`without a date` : say`valid ${dates.join(' ')}`;
   const invented =
-    prices.invented === true ? ' The prices are invented: they show the reckoning, not what things cost.' : '';
-  return `Price book: ${named(prices.name)}, ${valid}.${invented}`;
+    prices.invented === true ? say` The prices are invented: they show the reckoning, not what things cost.` : '';
+  return say`Price book: ${named(prices.name)}, ${valid}.${invented}`;
 }
 
 /**
@@ -105,14 +108,12 @@ export function priceBookWords({ prices }: MoneyPapers): string {
  */
 export function financeWords({ finance }: MoneyPapers): string {
   const { discountPct, horizonYears, billGrowthPct, costGrowthPct } = finance;
-  return (
-    `Reckoned over ${formatQuantity(horizonYears, horizonYears === 1 ? 'year' : 'years', 'given')} at ${formatQuantity(discountPct, '%', 'given')} a year, ` +
-    `bills growing by ${formatQuantity(billGrowthPct, '%', 'given')}, costs by ${formatQuantity(costGrowthPct, '%', 'given')}; no residual value.`
-  );
+  return say`Reckoned over ${formatQuantity(horizonYears, horizonYears === 1 ? say`year` : say`years`, 'given')} at ${formatQuantity(discountPct, '%', 'given')} a year,
+      bills growing by ${formatQuantity(billGrowthPct, '%', 'given')}, costs by ${formatQuantity(costGrowthPct, '%', 'given')}; no residual value.`;
 }
 
 function named(name: string | undefined): string {
-  return name === undefined ? 'without a name' : `“${plainName(name)}”`;
+  return name === undefined ? say`without a name` : `“${plainName(name)}”`;
 }
 
 /**
@@ -122,16 +123,14 @@ function named(name: string | undefined): string {
  * @returns why the choice is the best of its candidates
  */
 export function proofWords(proof: SearchProof, currency: string): string {
-  const count = (value: number) => `${formatNumber(value, 'whole')}${GAP}${value === 1 ? 'was' : 'were'}`;
+  const count = (value: number) => `${formatNumber(value, 'whole')}${GAP}${value === 1 ? say`was` : say`were`}`;
   const rest =
     proof.lowerBoundMargin === null
-      ? 'none of the rest was left unsettled.'
-      : `by its bound, the best of the rest falls short of it by at least ${formatMoney(proof.lowerBoundMargin, currency, 2)}.`;
-  return (
-    `Proof: of ${formatNumber(proof.candidates, 'whole')} candidates ${count(proof.refused)} refused by a limit or the target, ` +
-    `${count(proof.boundedAway)} bounded away, ${count(proof.partlySimulated)} given up part of the way, ` +
-    `${count(proof.simulated)} simulated through the whole record; ${rest}`
-  );
+      ? say`none of the rest was left unsettled.`
+      : say`by its bound, the best of the rest falls short of it by at least ${formatMoney(proof.lowerBoundMargin, currency, 2)}.`;
+  return say`Proof: of ${formatNumber(proof.candidates, 'whole')} candidates ${count(proof.refused)} refused by a limit or the target,
+      ${count(proof.boundedAway)} bounded away, ${count(proof.partlySimulated)} given up part of the way,
+      ${count(proof.simulated)} simulated through the whole record; ${rest}`;
 }
 
 /** One of the three ways that are always weighed. */
@@ -144,11 +143,11 @@ export interface NamedPick {
   reason: string;
 }
 
-const PICKS = [
+const PICKS = words([
   ['do nothing', 'Do nothing'],
   ["keep today's bank", 'Keep today’s bank'],
   ['new bank', 'Build the new bank'],
-] as const;
+] as const);
 
 /**
  * Doing nothing, keeping today's bank and the best new one, with the reasons between them.
@@ -167,8 +166,8 @@ export function namedPicks(money: Money, papers: MoneyPapers): NamedPick[] {
       ? takenReason(taken, ways, papers)
       : way === null
         ? key === 'new bank'
-          ? 'No candidate of the catalogue holds.'
-          : 'The site has no bank today.'
+          ? say`No candidate of the catalogue holds.`
+          : say`The site has no bank today.`
         : passedReason(way, taken, papers);
     return { name, way, isRecommended, reason };
   });
@@ -180,23 +179,24 @@ function mayBeTaken(way: Alternative, { mustMeetTarget }: MoneyPapers): boolean 
 
 function takenReason(taken: Alternative, ways: readonly (Alternative | null)[], papers: MoneyPapers): string {
   const others = ways.filter((way) => way !== null && way !== taken && mayBeTaken(way, papers)) as Alternative[];
-  if (papers.mustMeetTarget && !taken.targetMet) return 'Nothing else may be taken; it misses the target all the same.';
-  if (others.length === 0) return 'The only way that holds.';
+  if (papers.mustMeetTarget && !taken.targetMet)
+    return say`Nothing else may be taken; it misses the target all the same.`;
+  if (others.length === 0) return say`The only way that holds.`;
   const next = others.reduce((best, way) => (way.npv > best.npv ? way : best));
   const more = taken.npv - next.npv;
-  if (more <= 0.005) return 'Worth no less than the other ways that hold.';
-  return `Worth ${formatMoney(more, papers.currency)} more than the next way that holds.`;
+  if (more <= 0.005) return say`Worth no less than the other ways that hold.`;
+  return say`Worth ${formatMoney(more, papers.currency)} more than the next way that holds.`;
 }
 
 function passedReason(way: Alternative, taken: Alternative, papers: MoneyPapers): string {
   const faults = [
-    ...(way.verdict === 'avoid' ? ['it is over a limit'] : []),
-    ...(papers.mustMeetTarget && !way.targetMet ? ['it misses the target, which is demanded in every month'] : []),
+    ...(way.verdict === 'avoid' ? [say`it is over a limit`] : []),
+    ...(papers.mustMeetTarget && !way.targetMet ? [say`it misses the target, which is demanded in every month`] : []),
   ];
-  if (faults.length > 0) return `Not to be taken: ${faults.join(', and ')}.`;
+  if (faults.length > 0) return say`Not to be taken: ${faults.join(say`, and `)}.`;
   const less = taken.npv - way.npv;
-  if (less <= 0.005) return 'Worth no more, and something would have to be done for it.';
-  return `Worth ${formatMoney(less, papers.currency)} less.`;
+  if (less <= 0.005) return say`Worth no more, and something would have to be done for it.`;
+  return say`Worth ${formatMoney(less, papers.currency)} less.`;
 }
 
 /** A clause's amount over the record, before and after. */
@@ -220,7 +220,7 @@ export function clauseSums(bills: { before: Bill; after: Bill }): ClauseSum[] {
     before: sum(bills.before, of),
     after: sum(bills.after, of),
   });
-  const tax = both('tax', ({ tax: amount }) => amount);
+  const tax = both(say`tax`, ({ tax: amount }) => amount);
   return [
     ...names.map((name, at) => both(name, ({ lines }) => lines[at]?.amount ?? 0)),
     ...(tax.before === 0 && tax.after === 0 ? [] : [tax]),

@@ -1,6 +1,8 @@
 import type { Duty, EstimateOutcome, Outcome } from '#libs/engine/index.js';
 import { formatApart, formatNumber, formatQuantity, formatRange, GAP } from './format-number.js';
+import { engineName } from './engine-name.js';
 import { groupName } from './group-name.js';
+import { say } from './language.js';
 import { plainName } from './plain-name.js';
 import { reactorWords } from './proposed-words.js';
 import { bothRatings } from './single-line.js';
@@ -33,17 +35,17 @@ function facts(outcome: Outcome | EstimateOutcome): OperatorPage['facts'] {
     ...new Set(result.bank.stages.flatMap(({ tunedOrderH }) => (tunedOrderH === null ? [] : [tunedOrderH]))),
   ];
   return [
-    ['site', plainName(site.name)],
-    ['nominal voltage of the board', formatQuantity(site.nominalV, 'V', 'given')],
-    ['frequency', formatQuantity(site.frequencyHz, 'Hz', 'given')],
+    [say`site`, plainName(site.name)],
+    [say`nominal voltage of the board`, formatQuantity(site.nominalV, 'V', 'given')],
+    [say`frequency`, formatQuantity(site.frequencyHz, 'Hz', 'given')],
     [
-      transformers.length === 0 ? 'fault level at the board' : 'fault level at the primary',
+      transformers.length === 0 ? say`fault level at the board` : say`fault level at the primary`,
       formatRange({ low: faultLevelMva.min, high: faultLevelMva.max }, 'MVA'),
     ],
     [
-      'transformers',
+      say`transformers`,
       transformers.length === 0
-        ? 'none given'
+        ? say`none given`
         : transformers
             .map(
               ({ ratedKva, impedancePct }) =>
@@ -51,15 +53,15 @@ function facts(outcome: Outcome | EstimateOutcome): OperatorPage['facts'] {
             )
             .join('; '),
     ],
-    ['point of coupling taken', plainName(result.limits.couplingPoint)],
-    ['metered at', site.meteredAt === 'primary' ? 'the transformer’s primary' : 'the board'],
-    ['bank, effective', formatQuantity(result.bank.effectiveKvar, 'kvar')],
+    [say`point of coupling taken`, plainName(result.limits.couplingPoint)],
+    [say`metered at`, site.meteredAt === 'primary' ? say`the transformer’s primary` : say`the board`],
+    [say`bank, effective`, formatQuantity(result.bank.effectiveKvar, 'kvar')],
     [
-      'stages',
-      bank.groups.map((group) => `${group.count}${GAP}×${GAP}${bothRatings(outcome, group)}`).join('; ') || 'none',
+      say`stages`,
+      bank.groups.map((group) => `${group.count}${GAP}×${GAP}${bothRatings(outcome, group)}`).join('; ') || say`none`,
     ],
-    ['reactors', bank.groups.length === 0 ? 'none' : reactorWords(bank.groups)],
-    ['tuned order', tuned.length === 0 ? '–' : tuned.map((order) => formatNumber(order)).join(', ')],
+    [say`reactors`, bank.groups.length === 0 ? say`none` : reactorWords(bank.groups)],
+    [say`tuned order`, tuned.length === 0 ? '–' : tuned.map((order) => formatNumber(order)).join(', ')],
   ];
 }
 
@@ -76,10 +78,10 @@ function effects({ result }: Outcome | EstimateOutcome): OperatorPage['effects']
       ? []
       : [
           {
-            what: 'voltage change by the largest stage, at the least fault level',
+            what: say`voltage change by the largest stage, at the least fault level`,
             value: formatQuantity(change, '%'),
             limit: typeof limit === 'number' ? formatQuantity(limit, '%', 'given') : '–',
-            source: 'common practice',
+            source: say`common practice`,
             verdict: '–',
           },
         ]),
@@ -87,33 +89,33 @@ function effects({ result }: Outcome | EstimateOutcome): OperatorPage['effects']
       ? []
       : [
           {
-            what: 'inrush of a stage, peak',
+            what: say`inrush of a stage, peak`,
             value: formatQuantity(Math.max(...inrush), 'A'),
             limit: '–',
-            source: 'closed form or exact, the larger',
+            source: say`closed form or exact, the larger`,
             verdict: '–',
           },
         ]),
     ...result.devices
       .filter(({ device }) => device === 'stage.ripple')
       .map(({ group, value, fitted, unit, state }) => ({
-        what: group === null ? 'ripple signal' : `ripple signal, ${groupName(group)}`,
-        value: typeof fitted === 'number' ? `tuned to ${formatQuantity(fitted, unit)}` : 'no reactor',
+        what: group === null ? say`ripple signal` : say`ripple signal, ${groupName(group)}`,
+        value: typeof fitted === 'number' ? say`tuned to ${formatQuantity(fitted, unit)}` : say`no reactor`,
         limit: typeof value === 'number' ? formatQuantity(value, unit, 'given') : '–',
-        source: 'common practice',
-        verdict: state === 'fits' ? 'blocks' : 'may draw the signal in',
+        source: say`common practice`,
+        verdict: state === 'fits' ? say`blocks` : say`may draw the signal in`,
       })),
   ];
 }
 
 function dutyEffect(duty: Duty): OperatorPage['effects'][number] {
-  const order = duty.orderH === null ? '' : `, order${GAP}${formatNumber(duty.orderH, 'given')}`;
+  const order = duty.orderH === null ? '' : say`, order\u00a0${formatNumber(duty.orderH, 'given')}`;
   const apart = duty.limit === null ? null : formatApart(duty.value, duty.limit);
   return {
-    what: `${duty.name}${order}`,
+    what: `${engineName(duty.name)}${order}`,
     value: `${apart?.value ?? formatNumber(duty.value)}${GAP}${duty.unit}`,
     limit: apart === null ? '–' : `${apart.limit}${GAP}${duty.unit}`,
-    source: duty.source,
+    source: engineName(duty.source),
     verdict: verdictWords(duty.verdict),
   };
 }
@@ -123,28 +125,32 @@ function questions({ site, result }: Outcome | EstimateOutcome): OperatorPage['q
   const background = site.loads.backgroundPct;
   return [
     {
-      question: 'greatest and least fault level at the point of coupling',
+      question: say`greatest and least fault level at the point of coupling`,
       taken: formatRange({ low: faultLevelMva.min, high: faultLevelMva.max }, 'MVA'),
     },
     {
-      question: 'distortion of the supply with the site’s plant off, by order',
+      question: say`distortion of the supply with the site’s plant off, by order`,
       taken:
         background === null
-          ? 'unknown'
+          ? say`unknown`
           : background.length === 0
-            ? 'none, as declared'
+            ? say`none, as declared`
             : background
                 .map(
-                  ({ orderH, pct }) => `order ${formatNumber(orderH, 'given')}: ${formatQuantity(pct, '%', 'given')}`,
+                  ({ orderH, pct }) =>
+                    say`order ${formatNumber(orderH, 'given')}: ${formatQuantity(pct, '%', 'given')}`,
                 )
                 .join(', '),
     },
     {
-      question: 'frequency of a ripple signal, and whether stages have to block it',
-      taken: rippleHz === null ? 'none entered' : formatQuantity(rippleHz, 'Hz', 'given'),
+      question: say`frequency of a ripple signal, and whether stages have to block it`,
+      taken: rippleHz === null ? say`none entered` : formatQuantity(rippleHz, 'Hz', 'given'),
     },
-    { question: 'limits of distortion that apply, and the point of coupling', taken: result.limits.voltage },
-    { question: 'consent to connect the bank, and to the voltage change of a stage', taken: '–' },
-    { question: 'capacitors of others near by, in service or planned', taken: 'none' },
+    {
+      question: say`limits of distortion that apply, and the point of coupling`,
+      taken: engineName(result.limits.voltage),
+    },
+    { question: say`consent to connect the bank, and to the voltage change of a stage`, taken: '–' },
+    { question: say`capacitors of others near by, in service or planned`, taken: say`none` },
   ];
 }

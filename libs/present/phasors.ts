@@ -1,6 +1,7 @@
 import type { Outcome } from '#libs/engine/index.js';
 import type { Axis, Chart, Mark } from './chart.js';
 import { formatNumber, formatQuantity, MINUS } from './format-number.js';
+import { say } from './language.js';
 import { formatMoment } from './local-stamp.js';
 import { linearAxis } from './ticks.js';
 
@@ -37,21 +38,20 @@ export function phasors(outcome: Outcome, moment: Moment = worstMoment(outcome))
     id: 'phasors',
     finding:
       moment.bankKvar > 0
-        ? `The supply’s current falls from ${amperes(before)} to ${amperes(after)}`
-        : 'No stage is connected at this moment',
-    caption: `Currents at ${formatNumber(outcome.site.nominalV, 'given')} V in the interval from ${stamp}; voltage to the right, lagging downwards.`,
-    sentence:
-      `Voltage U points right. The load’s current, ${amperes(before)}, ${angleWords(load)}. ` +
-      `The capacitors’ current, ${amperes(moment.bankKvar * perKva)}, leads U by 90° and points up. ` +
-      `Their sum, the supply’s current, is ${amperes(after)} and ${angleWords(sum)}.`,
-    x: within(linearAxis('in phase', 'A', { least: reach.left, most: reach.x }, 4), {
+        ? say`The supply’s current falls from ${amperes(before)} to ${amperes(after)}`
+        : say`No stage is connected at this moment`,
+    caption: say`Currents at ${formatNumber(outcome.site.nominalV, 'given')} V in the interval from ${stamp}; voltage to the right, lagging downwards.`,
+    sentence: say`Voltage U points right. The load’s current, ${amperes(before)}, ${angleWords(load)}.
+        The capacitors’ current, ${amperes(moment.bankKvar * perKva)}, leads U by 90° and points up.
+        Their sum, the supply’s current, is ${amperes(after)} and ${angleWords(sum)}.`,
+    x: within(linearAxis(say`in phase`, 'A', { least: reach.left, most: reach.x }, 4), {
       // an exporting site's labels stand to the left of its arrows
       from: reach.left < 0 ? reach.left - 0.5 * reach.x : 0,
       to: reach.x * 1.3,
       // the letter U stands at the arrow’s end
       lastTick: reach.x * 1.12,
     }),
-    y: within(linearAxis('lagging downwards', 'A', { least: reach.down, most: reach.up }, 4), {
+    y: within(linearAxis(say`lagging downwards`, 'A', { least: reach.down, most: reach.up }, 4), {
       from: reach.down * 1.12,
       to: reach.up + 0.06 * reach.x,
     }),
@@ -86,9 +86,9 @@ function worstMoment(outcome: Outcome): Moment {
 
 function angleWords([x, y]: [number, number]): string {
   const degrees = (Math.atan2(y, x) * 180) / Math.PI;
-  if (Math.abs(degrees) < 0.05) return 'is in phase with U';
+  if (Math.abs(degrees) < 0.05) return say`is in phase with U`;
   const size = formatNumber(Math.abs(degrees));
-  return degrees < 0 ? `lags U, at ${MINUS}${size}°` : `leads U, at ${size}°`;
+  return degrees < 0 ? say`lags U, at ${MINUS}${size}°` : say`leads U, at ${size}°`;
 }
 
 function arrows(load: [number, number], sum: [number, number], bankA: number): Mark[] {
@@ -98,9 +98,9 @@ function arrows(load: [number, number], sum: [number, number], bankA: number): M
     y,
   });
   const ends = {
-    load: label('load', load, Math.hypot(...load)),
-    bank: label('bank', [load[0], (load[1] + sum[1]) / 2], bankA),
-    sum: label('supply', sum, Math.hypot(...sum)),
+    load: label(say`load`, load, Math.hypot(...load)),
+    bank: label(say`bank`, [load[0], (load[1] + sum[1]) / 2], bankA),
+    sum: label(say`supply`, sum, Math.hypot(...sum)),
   };
   const outward = load[0] < 0 ? 'left' : 'right';
   const along = 1.2 * Math.max(Math.hypot(...load), Math.hypot(...sum), 1);
@@ -131,10 +131,10 @@ function phasorTable(moment: Moment, ends: { load: [number, number]; sum: [numbe
     ...parts.map((part) => formatQuantity(value(part), '')),
   ];
   return {
-    columns: ['', 'load', 'bank', 'supply'].map((head, at) => ({ head, right: at > 0 })),
+    columns: ['', say`load`, say`bank`, say`supply`].map((head, at) => ({ head, right: at > 0 })),
     rows: [
       row('kW', (part) => part.kw),
-      row('kvar, lagging', (part) => part.kvar),
+      row(say`kvar, lagging`, (part) => part.kvar),
       row('kVA', (part) => Math.hypot(part.kw, part.kvar)),
       row('A', (part) => part.amperes),
       row('cos φ', (part) => (part.kw === 0 ? null : Math.abs(part.kw) / Math.hypot(part.kw, part.kvar))),

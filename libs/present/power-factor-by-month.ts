@@ -1,6 +1,7 @@
 import type { Outcome } from '#libs/engine/index.js';
 import type { Chart } from './chart.js';
 import { formatApart, formatNumber } from './format-number.js';
+import { say } from './language.js';
 import { formatMonth } from './local-stamp.js';
 import { monthAxis, pairMarks } from './month-pairs.js';
 import { niceStep } from './ticks.js';
@@ -23,9 +24,9 @@ export function powerFactorByMonth(outcome: Outcome): Chart {
   return {
     id: 'powerFactorByMonth',
     finding: finding(months, target),
-    caption: `Energy power factor at the meter, lagging kvarh only. Ring: before. Disc: after. Dotted: target ${formatNumber(target, 'given')}.`,
+    caption: say`Energy power factor at the meter, lagging kvarh only. Ring: before. Disc: after. Dotted: target ${formatNumber(target, 'given')}.`,
     sentence: months
-      .map(({ month, before, after }) => `${formatMonth(month)}: ${number(before)} before, ${number(after)} after.`)
+      .map(({ month, before, after }) => say`${formatMonth(month)}: ${number(before)} before, ${number(after)} after.`)
       .join(' '),
     x: monthAxis(months.map(({ month }) => month)),
     y: factorAxis(Math.min(...known, target)),
@@ -33,7 +34,7 @@ export function powerFactorByMonth(outcome: Outcome): Chart {
     series: [{ part: 'limit', shape: 'line', x: [-0.5, months.length - 0.5], y: [target, target] }],
     marks: months.flatMap(({ before, after }, at) => pairMarks(at, before, after)),
     table: {
-      columns: ['month', 'before', 'after'].map((head, at) => ({ head, right: at > 0 })),
+      columns: [say`month`, say`before`, say`after`].map((head, at) => ({ head, right: at > 0 })),
       rows: months.map(({ month, before, after }) => [formatMonth(month), number(before), beside(after, target)]),
     },
   };
@@ -69,14 +70,14 @@ export function factorAxis(least: number): Chart['y'] {
   for (let n = Math.round(from / step); n * step <= 1 + 1e-9; n++) {
     ticks.push({ at: n * step, text: (n * step).toFixed(2) });
   }
-  return { label: 'power factor', unit: '', scale: 'linear', from, to: 1, ticks };
+  return { label: say`power factor`, unit: '', scale: 'linear', from, to: 1, ticks };
 }
 
 function finding(months: readonly MonthPair[], target: number): string {
   const text = formatNumber(target, 'given');
   const missed = months.filter(({ after }) => after !== null && after < target - 1e-9);
-  if (missed.length === 0) return `Every month reaches ${text}`;
+  if (missed.length === 0) return say`Every month reaches ${text}`;
   const worst = missed.reduce((low, month) => (month.after! < low.after! ? month : low));
-  const count = missed.length === 1 ? 'One month stays' : `${missed.length} months stay`;
-  return `${count} under ${text}, ${formatMonth(worst.month)} by most`;
+  const count = missed.length === 1 ? say`One month stays` : say`${missed.length} months stay`;
+  return say`${count} under ${text}, ${formatMonth(worst.month)} by most`;
 }

@@ -1,5 +1,6 @@
 import type { RecordGrade, Remark, ZoneTable } from '#libs/engine/index.js';
 import { formatNumber, formatQuantity, GAP } from './format-number.js';
+import { say, words } from './language.js';
 import { formatLength, formatMoment, formatMonth } from './local-stamp.js';
 
 /** Coverage of a month as it is stated. */
@@ -31,12 +32,12 @@ export interface QualityStated {
   questions: readonly Remark[];
 }
 
-const GRADES: Record<RecordGrade, string> = {
+const GRADES: Record<RecordGrade, string> = words({
   full: 'full: a year of readings',
   usable: 'usable: a season may be missing',
   limited: 'limited: it says little of the rest of the year',
   insufficient: 'insufficient: no bank can be recommended on it',
-};
+});
 
 /**
  * A grade with what it means.
@@ -46,12 +47,12 @@ export function gradeWords(grade: RecordGrade): string {
   return GRADES[grade];
 }
 
-const REPAIRS = {
+const REPAIRS = words({
   none: 'none asked for',
   hold: 'holding the value before',
   interpolate: 'a line between neighbours',
   typicalDay: 'the typical day',
-} as const;
+} as const);
 
 /** Spans that a list shows before it only counts them. */
 const SHOWN_SPANS = 5;
@@ -65,23 +66,23 @@ const SHOWN_SPANS = 5;
 export function qualityRows(quality: QualityStated, zone: ZoneTable): [string, string][] {
   const whole = (value: number) => formatNumber(value, 'whole');
   const { repair, missingSpans, missingSpanCount, suspectZeros, suspectZeroCount } = quality;
-  const upTo = repair.upToS === null ? '' : `, gaps up to ${formatLength(repair.upToS)}`;
-  const missing = quality.missingSpans.length === 0 ? 'none' : listed(missingSpans, missingSpanCount, zone);
+  const upTo = repair.upToS === null ? '' : say`, gaps up to ${formatLength(repair.upToS)}`;
+  const missing = quality.missingSpans.length === 0 ? say`none` : listed(missingSpans, missingSpanCount, zone);
   const zeros = listed(
     suspectZeros.map((run) => ({ ...run, of: `${run.at} ` })),
     suspectZeroCount,
     zone,
   );
   return [
-    ['rows read', `${whole(quality.rowsRead)} (${quality.format}), ${whole(quality.rejectedRows)} rejected`],
-    ['intervals expected', whole(quality.intervalsExpected)],
-    ['missing spans', missing],
-    ['repaired', `${whole(quality.repaired)}: ${REPAIRS[repair.method]}${upTo}`],
-    ['repeats left out', whole(quality.duplicates)],
-    ['suspect zeros', suspectZeroCount === 0 ? 'none' : zeros],
+    [say`rows read`, say`${whole(quality.rowsRead)} (${quality.format}), ${whole(quality.rejectedRows)} rejected`],
+    [say`intervals expected`, whole(quality.intervalsExpected)],
+    [say`missing spans`, missing],
+    [say`repaired`, `${whole(quality.repaired)}: ${REPAIRS[repair.method]}${upTo}`],
+    [say`repeats left out`, whole(quality.duplicates)],
+    [say`suspect zeros`, suspectZeroCount === 0 ? say`none` : zeros],
     [
-      'seasons without readings',
-      quality.seasonsMissing.length === 0 ? 'none' : quality.seasonsMissing.join(', ').replaceAll('-', '–'),
+      say`seasons without readings`,
+      quality.seasonsMissing.length === 0 ? say`none` : quality.seasonsMissing.join(', ').replaceAll('-', '–'),
     ],
   ];
 }
@@ -97,14 +98,16 @@ function listed(spans: readonly Span[], count: number, zone: ZoneTable): string 
     .slice(0, SHOWN_SPANS)
     .map(
       ({ beginS, endS, of = '' }) =>
-        `${of}from ${formatMoment(zone, beginS)}, ${formatLength(Math.round(endS - beginS))}`,
+        say`${of}from ${formatMoment(zone, beginS)}, ${formatLength(Math.round(endS - beginS))}`,
     );
   const more = count - shown.length;
-  return `${formatNumber(count, 'whole')}: ${shown.join('; ')}${more > 0 ? `; and ${formatNumber(more, 'whole')} more` : ''}`;
+  return `${formatNumber(count, 'whole')}: ${shown.join('; ')}${more > 0 ? say`; and ${formatNumber(more, 'whole')} more` : ''}`;
 }
 
 /** Heads of the columns of `monthCells`. */
-export const MONTH_HEADS = ['month', 'expected', 'valid', 'repaired', 'covered'] as const;
+export const MONTH_HEADS = words(['month', 'expected', 'valid', 'repaired', 'covered'] as const);
+/** Place of the head that stands only where repairs are known by the month. */
+export const REPAIRED_HEAD = 3;
 
 /**
  * Coverage of a month as cells of a table.
@@ -124,5 +127,5 @@ export function monthCells(month: Omit<MonthStated, 'repaired'> & { repaired?: n
 // 99.97 % is not all of it.
 function coveredWords({ intervals, intervalsExpected, coveredPct }: Omit<MonthStated, 'repaired'>): string {
   if (intervals === intervalsExpected) return `100${GAP}%`;
-  return coveredPct > 99.9 ? `over 99.9${GAP}%` : formatQuantity(coveredPct, '%');
+  return coveredPct > 99.9 ? say`over 99.9\u00a0%` : formatQuantity(coveredPct, '%');
 }

@@ -13,7 +13,7 @@ import {
   tonightSentences,
 } from './reevaluation-words.js';
 import { finished, leftTableLines, wrapped } from './terminal-lines.js';
-import { NO_PERMISSION } from './verdict-words.js';
+import { noPermission } from './verdict-words.js';
 
 /**
  * A bank judged again, for a terminal: what to do first, then what changed, what would mend it, and since when.
@@ -27,7 +27,7 @@ export function reevaluationReport({ reevaluation, after }: Reevaluated): string
   const tonight = tonightSentences(reevaluation);
   const since = sinceSentences(reevaluation);
   return finished([
-    ...wrapped(`Judged again: ${reevaluationFinding(reevaluation)}. ${NO_PERMISSION}`, ''),
+    ...wrapped(`Judged again: ${reevaluationFinding(reevaluation)}. ${noPermission()}`, ''),
     '',
     ...tonight.flatMap((sentence) => wrapped(`! ${sentence}`, '  ')),
     ...(tonight.length === 0 ? [] : ['']),

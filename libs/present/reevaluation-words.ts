@@ -10,12 +10,14 @@ import type {
 } from '#libs/engine/index.js';
 import { deviceName } from './device-words.js';
 import { countWord } from './findings.js';
+import { engineName } from './engine-name.js';
 import { formatNumber, formatQuantity } from './format-number.js';
+import { say, words } from './language.js';
 import { formatDate, formatMonth } from './local-stamp.js';
 import { plainName } from './plain-name.js';
 import { VERDICT_WORDS, verdictWords } from './verdict-words.js';
 
-const FIGURE_NAMES: Record<ResultChange['id'], string> = {
+const FIGURE_NAMES: Record<ResultChange['id'], string> = words({
   verdict: 'verdict',
   'need.maxKvar': 'greatest need',
   'need.p95Kvar': 'need passed in 5 % of the record',
@@ -34,10 +36,10 @@ const FIGURE_NAMES: Record<ResultChange['id'], string> = {
   'network.voltageDistortionPct': 'voltage distortion, worst case',
   'network.currentDistortionPct': 'current distortion, worst case',
   duty: 'duty',
-};
+});
 
 /** Heads of the table of changed figures. */
-export const CHANGE_HEADS = ['what', 'before', 'after', 'limit', 'verdict'] as const;
+export const CHANGE_HEADS = words(['what', 'before', 'after', 'limit', 'verdict'] as const);
 
 /**
  * Changed figures, one row each.
@@ -58,14 +60,14 @@ export function changeRows({ changes }: Reevaluation, currency: string): string[
       value(change.before),
       value(change.after),
       formatQuantity(change.limit, change.unit, 'given'),
-      moved ? `${verdictWords(change.verdictBefore)}, now ${judged}` : judged,
+      moved ? say`${verdictWords(change.verdictBefore)}, now ${judged}` : judged,
     ];
   });
 }
 
 function nameOf({ id, name, group }: ResultChange): string {
   if (name === null) return FIGURE_NAMES[id];
-  return group === null ? name : `${name}, group ${group + 1}`;
+  return group === null ? engineName(name) : say`${engineName(name)}, group ${group + 1}`;
 }
 
 /**
@@ -77,50 +79,50 @@ export function tonightSentences({ tonight, stages }: Reevaluation): string[] {
   if (tonight === null) return [];
   const { within, nearLimits, until } = tonight;
   const sentences = [
-    `Tonight: keep out ${stagesOutWords(within, stages)}. ${leftWords(within)}`,
-    'A qualified person switches them off, secures them against reconnection and waits out their discharge, as the ' +
-      'section of cautions says; the controller must not be able to connect them.',
-    `They stay out until ${listed(until.map(toMendWords))} ${until.length === 1 ? 'has' : 'have'} been mended and the bank has been judged again.`,
+    say`Tonight: keep out ${stagesOutWords(within, stages)}. ${leftWords(within)}`,
+    say`A qualified person switches them off, secures them against reconnection and waits out their discharge, as the
+      section of cautions says; the controller must not be able to connect them.`,
+    say`They stay out until ${listed(until.map(toMendWords))} ${until.length === 1 ? say`has` : say`have`} been mended and the bank has been judged again.`,
   ];
   if (nearLimits !== null) {
     sentences.push(
-      `With ${stagesOutWords(nearLimits, stages)} out nothing is over a limit, though near one: a second best, to be ` +
-        'accepted by whoever answers for the installation.',
+      say`With ${stagesOutWords(nearLimits, stages)} out nothing is over a limit, though near one: a second best, to be
+        accepted by whoever answers for the installation.`,
     );
   }
   return sentences;
 }
 
 function leftWords({ keptKvar, verdict }: StagesOut): string {
-  if (keptKvar === 0) return 'No stage may stay in.';
-  return `With what is left, ${formatQuantity(keptKvar, 'kvar')}, every level is ${VERDICT_WORDS[verdict]} in every corner.`;
+  if (keptKvar === 0) return say`No stage may stay in.`;
+  return say`With what is left, ${formatQuantity(keptKvar, 'kvar')}, every level is ${VERDICT_WORDS[verdict]} in every corner.`;
 }
 
 function stagesOutWords({ out, outKvar }: StagesOut, stages: readonly MeasuredEntry[]): string {
   const parts = stages.flatMap((entry, k) => (out[k]! === 0 ? [] : [entryWords(entry, out[k]!)]));
-  return parts.length === 0 ? 'nothing' : `${listed(parts)} (${formatQuantity(outKvar, 'kvar')} at the bus)`;
+  return parts.length === 0 ? say`nothing` : say`${listed(parts)} (${formatQuantity(outKvar, 'kvar')} at the bus)`;
 }
 
 function entryWords({ group, stage, count, ratedKvar }: MeasuredEntry, out: number): string {
   const size = formatQuantity(ratedKvar, 'kvar');
-  if (stage !== null) return `stage ${stage} of group ${group + 1}, ${size} as it measures`;
-  return `${out === count && count > 1 ? 'all ' : ''}${countWord(out)} of group ${group + 1}, ${size} each`;
+  if (stage !== null) return say`stage ${stage} of group ${group + 1}, ${size} as it measures`;
+  return say`${out === count && count > 1 ? say`all ` : ''}${countWord(out)} of group ${group + 1}, ${size} each`;
 }
 
 function toMendWords({ kind, name, group }: ToMend): string {
-  const words = kind === 'device' ? deviceName(name) : name;
-  return group === null ? words : `${words} of group ${group + 1}`;
+  const words = kind === 'device' ? deviceName(name) : engineName(name);
+  return group === null ? words : say`${words} of group ${group + 1}`;
 }
 
 /** Heads of the table of remedies. */
-export const REMEDY_HEADS = [
+export const REMEDY_HEADS = words([
   'what would mend it',
   'verdict',
   'lowest month',
   'switchings a day',
   'bill a day',
   'parts',
-] as const;
+] as const);
 
 /**
  * Ways to mend the bank, the best first.
@@ -130,7 +132,7 @@ export const REMEDY_HEADS = [
  */
 export function remedyRows({ remedies, stages }: Reevaluation, currency: string): string[][] {
   return remedies.map((remedy) => [
-    `${remedyWords(remedy, stages)}${remedy.mends ? '' : ' (not enough by itself)'}`,
+    `${remedyWords(remedy, stages)}${remedy.mends ? '' : say` (not enough by itself)`}`,
     VERDICT_WORDS[remedy.verdict],
     formatQuantity(remedy.lowestPowerFactor, ''),
     formatNumber(remedy.switchingsPerDay),
@@ -140,38 +142,36 @@ export function remedyRows({ remedies, stages }: Reevaluation, currency: string)
 }
 
 function remedyWords(remedy: Remedy, stages: readonly MeasuredEntry[]): string {
-  const setPoint = `set point ${formatNumber(remedy.setPointPowerFactor, 'given')}`;
+  const setPoint = say`set point ${formatNumber(remedy.setPointPowerFactor, 'given')}`;
   const plate = [
-    `${formatQuantity(remedy.ratedKvar, 'kvar', 'given')} at ${formatQuantity(remedy.ratedV, 'V', 'given')}`,
-    remedy.reactorPct === 0 ? 'plain' : formatQuantity(remedy.reactorPct, '% reactors', 'given'),
+    say`${formatQuantity(remedy.ratedKvar, 'kvar', 'given')} at ${formatQuantity(remedy.ratedV, 'V', 'given')}`,
+    remedy.reactorPct === 0 ? say`plain` : formatQuantity(remedy.reactorPct, say`% reactors`, 'given'),
   ].join(', ');
-  const count = `${countWord(remedy.stages)} ${remedy.stages === 1 ? 'stage' : 'stages'}`;
+  const count = `${countWord(remedy.stages)} ${remedy.stages === 1 ? say`stage` : say`stages`}`;
   switch (remedy.kind) {
     case 'setPoint':
-      return `change the set point to ${formatNumber(remedy.setPointPowerFactor, 'given')}`;
+      return say`change the set point to ${formatNumber(remedy.setPointPowerFactor, 'given')}`;
     case 'remove':
-      return `leave out ${listed(stages.flatMap((entry, k) => (remedy.out![k]! === 0 ? [] : [entryWords(entry, remedy.out![k]!)])))}; ${setPoint}`;
+      return say`leave out ${listed(stages.flatMap((entry, k) => (remedy.out![k]! === 0 ? [] : [entryWords(entry, remedy.out![k]!)])))}; ${setPoint}`;
     case 'replace':
-      return `replace ${count} by new ones of ${plate}; ${setPoint}`;
+      return say`replace ${count} by new ones of ${plate}; ${setPoint}`;
     case 'restore':
-      return `put back ${count} of ${plate}; ${setPoint}`;
+      return say`put back ${count} of ${plate}; ${setPoint}`;
     case 'renew':
-      return `put back what is gone and replace what has aged, ${count} of ${plate}; ${setPoint}`;
+      return say`put back what is gone and replace what has aged, ${count} of ${plate}; ${setPoint}`;
     case 'add':
-      return `add ${count} of ${plate}; ${setPoint}`;
+      return say`add ${count} of ${plate}; ${setPoint}`;
     case 'detune':
-      return (
-        `detune: all ${count} new, ${formatQuantity(remedy.reactorPct, '% reactors', 'given')} and capacitors for ` +
-        `${formatQuantity(remedy.ratedV, 'V', 'given')}; ${setPoint}`
-      );
+      return say`detune: all ${count} new, ${formatQuantity(remedy.reactorPct, say`% reactors`, 'given')} and capacitors for
+          ${formatQuantity(remedy.ratedV, 'V', 'given')}; ${setPoint}`;
   }
 }
 
-const SERIES_WORDS: Record<SinceWhen['changes'][number]['series'], string> = {
+const SERIES_WORDS: Record<SinceWhen['changes'][number]['series'], string> = words({
   activeKw: 'The load’s mean kW a day',
   needKvar: 'The kvar needed at the bus, mean of a day,',
   shortKvar: 'The kvar at the meter beyond the target, mean of a day,',
-};
+});
 
 /**
  * Since when the bank no longer does what it should.
@@ -180,26 +180,26 @@ const SERIES_WORDS: Record<SinceWhen['changes'][number]['series'], string> = {
  */
 export function sinceSentences({ since }: Reevaluation): string[] {
   if (since === null) return [];
-  const by = since.monthsBy === 'metered' ? 'as metered' : 'with the bank simulated';
+  const by = since.monthsBy === 'metered' ? say`as metered` : say`with the bank simulated`;
   const months =
     since.firstMonthOut === null
-      ? `The last month meets the target, ${by}.`
-      : `Below the target since ${formatMonth(since.firstMonthOut)}, ${by}.`;
+      ? say`The last month meets the target, ${by}.`
+      : say`Below the target since ${formatMonth(since.firstMonthOut)}, ${by}.`;
   const changes = since.changes.map(({ series, unit, date, before, after, explained }) => {
-    const course = `from ${formatQuantity(before, unit)} to ${formatQuantity(after, unit)}`;
-    const share = `it explains ${formatQuantity(100 * explained, '%', 'whole')} of what the weekdays leave`;
+    const course = say`from ${formatQuantity(before, unit)} to ${formatQuantity(after, unit)}`;
+    const share = say`it explains ${formatQuantity(100 * explained, '%', 'whole')} of what the weekdays leave`;
     return date === null
-      ? `${SERIES_WORDS[series]} drifted ${course} over the record, with no day to name; ${share}.`
-      : `${SERIES_WORDS[series]} went ${course} on ${formatDate(date)}; ${share}.`;
+      ? say`${SERIES_WORDS[series]} drifted ${course} over the record, with no day to name; ${share}.`
+      : say`${SERIES_WORDS[series]} went ${course} on ${formatDate(date)}; ${share}.`;
   });
   return [
     months,
-    ...(changes.length === 0 ? ['No day stands out on which load, need or shortfall changed.'] : changes),
+    ...(changes.length === 0 ? [say`No day stands out on which load, need or shortfall changed.`] : changes),
   ];
 }
 
 /** Heads of the table of both records. */
-export const LIKE_HEADS = ['on like terms', 'before', 'after'] as const;
+export const LIKE_HEADS = words(['on like terms', 'before', 'after'] as const);
 
 /**
  * Both records on like terms.
@@ -216,33 +216,33 @@ export function likeRows({ records }: Reevaluation): string[][] {
   const of = (key: 'days' | 'activeKwhPerDay' | 'laggingKvarhPerDay' | 'leadingKvarhPerDay' | 'maxKw') =>
     records.records.map((terms) => terms[key]);
   return [
-    row('length of the record', of('days'), 'days'),
-    row('energy a day', of('activeKwhPerDay'), 'kWh'),
-    row('lagging a day', of('laggingKvarhPerDay'), 'kvarh'),
-    row('leading a day', of('leadingKvarhPerDay'), 'kvarh'),
+    row(say`length of the record`, of('days'), say`days`),
+    row(say`energy a day`, of('activeKwhPerDay'), 'kWh'),
+    row(say`lagging a day`, of('laggingKvarhPerDay'), 'kvarh'),
+    row(say`leading a day`, of('leadingKvarhPerDay'), 'kvarh'),
     row(
-      'power factor',
+      say`power factor`,
       records.records.map(({ powerFactorLagging }) => powerFactorLagging),
       '',
     ),
-    row('greatest demand', of('maxKw'), 'kW'),
+    row(say`greatest demand`, of('maxKw'), 'kW'),
     ...(sameHours === null
       ? []
       : [
           row(
-            `mean over the ${formatNumber(sameHours.hours, 'whole')} hours of the week both have`,
+            say`mean over the ${formatNumber(sameHours.hours, 'whole')} hours of the week both have`,
             sameHours.activeKw,
             'kW',
           ),
-          row('and reactive, net', sameHours.reactiveKvar, 'kvar'),
+          row(say`and reactive, net`, sameHours.reactiveKvar, 'kvar'),
         ]),
     ...sameMonths.map(({ month, powerFactorLagging }) =>
-      row(`power factor in ${MONTHS[month - 1]}`, powerFactorLagging, ''),
+      row(say`power factor in ${MONTHS[month - 1] ?? ''}`, powerFactorLagging, ''),
     ),
   ];
 }
 
-const MONTHS = [
+const MONTHS = words([
   'January',
   'February',
   'March',
@@ -255,10 +255,10 @@ const MONTHS = [
   'October',
   'November',
   'December',
-];
+]);
 
 /** Heads of the table of changed inputs. */
-export const INPUT_HEADS = ['field', 'before', 'after'] as const;
+export const INPUT_HEADS = words(['field', 'before', 'after'] as const);
 
 /**
  * Fields of the site that changed.
@@ -279,22 +279,22 @@ export function inputRows({ inputs }: Reevaluation): string[][] {
  * @returns for a headline
  */
 export function reevaluationFinding({ verdict, changes, inputs, newRecord, remedies }: Reevaluation): string {
-  if (inputs.length === 0 && !newRecord) return 'nothing changed';
+  if (inputs.length === 0 && !newRecord) return say`nothing changed`;
   const moved =
     verdict.before === verdict.after
-      ? `still ${VERDICT_WORDS[verdict.after]}`
-      : `from ${VERDICT_WORDS[verdict.before]} to ${VERDICT_WORDS[verdict.after]}`;
-  return `${moved}; ${formatNumber(changes.length, 'whole')} ${changes.length === 1 ? 'figure' : 'figures'} changed, ${waysWords(remedies)}`;
+      ? say`still ${VERDICT_WORDS[verdict.after]}`
+      : say`from ${VERDICT_WORDS[verdict.before]} to ${VERDICT_WORDS[verdict.after]}`;
+  return say`${moved}; ${formatNumber(changes.length, 'whole')} ${changes.length === 1 ? say`figure` : say`figures`} changed, ${waysWords(remedies)}`;
 }
 
 function waysWords(remedies: readonly Remedy[]): string {
   const mend = remedies.filter(({ mends }) => mends).length;
-  if (remedies.length === 0) return 'nothing to mend';
-  if (mend === 0) return 'no single way mends it whole';
-  return `${countWord(mend)} ${mend === 1 ? 'way' : 'ways'} to mend it`;
+  if (remedies.length === 0) return say`nothing to mend`;
+  if (mend === 0) return say`no single way mends it whole`;
+  return say`${countWord(mend)} ${mend === 1 ? say`way` : say`ways`} to mend it`;
 }
 
 function listed(parts: readonly string[]): string {
   if (parts.length < 2) return parts.join('');
-  return `${parts.slice(0, -1).join(', ')} and ${parts[parts.length - 1]}`;
+  return say`${parts.slice(0, -1).join(', ')} and ${parts.at(-1)!}`;
 }

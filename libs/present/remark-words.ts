@@ -1,6 +1,9 @@
 import type { Remark } from '#libs/engine/index.js';
 import { deviceName, enteredWords } from './device-words.js';
+import { engineName } from './engine-name.js';
+import { capital } from './first-letter.js';
 import { formatApart, formatNumber, formatQuantity, GAP, unitOfName } from './format-number.js';
+import { spokenCatalogue, type Translation } from './language.js';
 import { formatDate, formatLength, formatMonth } from './local-stamp.js';
 import type { Message } from './message.js';
 import { MESSAGES } from './message-catalogue.js';
@@ -24,8 +27,8 @@ export function remarkInWords(remark: Remark): Remark {
  * @returns a sentence, first letter large
  */
 export function remarkSentence(remark: Remark): string {
-  const message = MESSAGES[remark.code];
-  if (message === undefined) return `${remark.code}${listed(remark)}.`;
+  const message = spokenMessage(remark.code);
+  if (message === null) return `${remark.code}${listed(remark)}.`;
   return capital(filled(message.text, remark));
 }
 
@@ -35,7 +38,7 @@ export function remarkSentence(remark: Remark): string {
  * @returns a phrase or a sentence, first letter large
  */
 export function remarkSubject(remark: Remark): string {
-  const subject = MESSAGES[remark.code]?.subject;
+  const subject = spokenMessage(remark.code)?.subject;
   return subject === undefined ? remarkSentence(remark) : capital(filled(subject, remark));
 }
 
@@ -45,8 +48,8 @@ export function remarkSubject(remark: Remark): string {
  * @returns a sentence, empty where there is nothing to do
  */
 export function remarkConsequence(remark: Remark): string {
-  const message = MESSAGES[remark.code];
-  return message === undefined ? '' : filled(message.consequence, remark);
+  const message = spokenMessage(remark.code);
+  return message === null ? '' : filled(message.consequence, remark);
 }
 
 /**
@@ -56,6 +59,11 @@ export function remarkConsequence(remark: Remark): string {
  */
 export function messageOf(code: string): Message | null {
   return MESSAGES[code] ?? null;
+}
+
+/** The entry's texts in the language in force; English where its catalogue lacks the code. */
+function spokenMessage(code: string): Translation | null {
+  return spokenCatalogue()?.messages[code] ?? messageOf(code);
 }
 
 /**
@@ -97,12 +105,15 @@ function valueWords(name: string, value: number | string, remark: Remark): strin
   return formatQuantity(value, unit, 'given');
 }
 
+/** Values that a user or a file named; they are never translated. */
+const GIVEN_NAMES = new Set(['name', 'column', 'columns', 'meter', 'meters', 'sheet', 'sheets', 'channels', 'zone']);
+
 function textWords(name: string, value: string): string {
   if (name === 'month') return formatMonth(value);
   if (name === 'date') return formatDate(value);
   if (name === 'device') return deviceName(value);
-  if (name === 'value' || name === 'limit') return plainName(enteredWords(spaced(value)));
-  return plainName(spaced(value));
+  const said = name === 'value' || name === 'limit' ? enteredWords(spaced(value)) : spaced(value);
+  return plainName(GIVEN_NAMES.has(name) ? said : engineName(said));
 }
 
 function seconds(value: number): string {
@@ -118,8 +129,4 @@ function spaced(word: string): string {
 function listed(remark: Remark): string {
   const entries = Object.entries(remark.values).map(([name, value]) => `${name} ${valueWords(name, value, remark)}`);
   return entries.length === 0 ? '' : `: ${entries.join(', ')}`;
-}
-
-function capital(sentence: string): string {
-  return sentence.charAt(0).toUpperCase() + sentence.slice(1);
 }

@@ -4,37 +4,39 @@ import type { PaperStanding } from '#libs/review/paper-standing.js';
 import type { Staleness } from '#libs/review/refusals.js';
 import type { Review, ReviewState } from '#libs/review/review.js';
 import type { Capacity, ReviewAct } from '#libs/review/review-act.js';
-import { formatNumber, formatQuantity, GAP } from './format-number.js';
+import { formatNumber, formatQuantity } from './format-number.js';
+import { say, words } from './language.js';
 
 /** A revision's state as a person reads it. */
-export const STATE_WORDS: Record<ReviewState, string> = {
+export const STATE_WORDS: Record<ReviewState, string> = words({
   draft: 'draft, not reviewed',
   forReview: 'for review',
   approved: 'approved',
   superseded: 'superseded',
   withdrawn: 'withdrawn',
-};
+});
 
 /** What each signature says, above the name. */
-export const SIGNATURE_STATEMENTS: Record<Capacity, string> = {
+export const SIGNATURE_STATEMENTS: Record<Capacity, string> = words({
   design: 'I designed this from the data it names, and answer for the design as far as those data hold.',
   checking:
     'I checked this design against the basis it states, worked decisive figures out by hand, and accepted each finding listed ' +
     'as accepted by me, for the reason given. I answer for the checking.',
   installation:
     'The bank was isolated, tested and put into service as this record says. I answer for the installation as I left it.',
-};
+});
 
 /** What a signature answers for, in a word or two. */
-export const CAPACITY_WORDS: Record<Capacity, string> = {
+export const CAPACITY_WORDS: Record<Capacity, string> = words({
   design: 'design',
   checking: 'checking and approval',
   installation: 'installation',
-};
+});
 
 /** Stands on the paper where whoever prepared a plan approved it. */
-export const OWN_APPROVAL =
-  'Whoever approved this also prepared it. The administrator allowed that; no second person has checked it.';
+export function ownApproval(): string {
+  return say`Whoever approved this also prepared it. The administrator allowed that; no second person has checked it.`;
+}
 
 /** What an approval gives as the reason where it puts an earlier revision out of use. */
 export function replacedWords(revision: number): string {
@@ -102,9 +104,9 @@ export function numberWords(name: string, state: ReviewState, supersededBy: numb
 
 /** A hand check in one line. */
 export function handCheckWords({ value, computed, unit, deviationPct, isBeyond }: HandCheck): string {
-  const apart = deviationPct === null ? 'where 0 was computed' : `${formatNumber(deviationPct)}${GAP}% apart`;
-  const pair = `${formatQuantity(value, unit, 'given')} by hand, ${formatQuantity(computed, unit, 'given')} computed`;
-  return `${pair}, ${apart}${isBeyond ? ': more than 2\u00a0%, to be explained' : ''}`;
+  const apart = deviationPct === null ? say`where 0 was computed` : say`${formatNumber(deviationPct)}\u00a0% apart`;
+  const pair = say`${formatQuantity(value, unit, 'given')} by hand, ${formatQuantity(computed, unit, 'given')} computed`;
+  return `${pair}, ${apart}${isBeyond ? say`: more than 2\u00a0%, to be explained` : ''}`;
 }
 
 /** What happened, in one line of the log. */

@@ -1,5 +1,6 @@
 import type { EstimateResult, Result, Verdict } from '#libs/engine/index.js';
 import { formatNumber, formatQuantity } from './format-number.js';
+import { words } from './language.js';
 import { verdictWords } from './verdict-words.js';
 
 /** What one revision came to, in the numbers that decide. */
@@ -45,7 +46,7 @@ export function revisionNumbers(result: Result | EstimateResult): RevisionNumber
 }
 
 /** Heads of the columns of `revisionCells`. */
-export const REVISION_HEADS = [
+export const REVISION_HEADS = words([
   'needed, 99\u00a0%',
   'effective',
   'stages',
@@ -54,7 +55,7 @@ export const REVISION_HEADS = [
   'switchings',
   'saved a year',
   'verdict',
-] as const;
+] as const);
 
 /**
  * A revision's numbers as printed.

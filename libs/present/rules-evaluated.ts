@@ -1,5 +1,6 @@
 import type { EstimateResult, Result } from '#libs/engine/index.js';
 import { formatNumber } from './format-number.js';
+import { say } from './language.js';
 import { RECORD_MESSAGES } from './record-messages.js';
 import { UNUSUAL_MESSAGES } from './unusual-messages.js';
 
@@ -50,12 +51,12 @@ export function rulesEvaluated(result: Result | EstimateResult): RulesEvaluated 
 export function rulesWords({ rows, notJudged, devices, assumptions, signs, inputs }: RulesEvaluated): string {
   const whole = (count: number): string => formatNumber(count, 'whole');
   const parts = [
-    `${whole(rows)} ${rows === 1 ? 'row' : 'rows'} held against a limit`,
-    `${whole(devices)} fitted ${devices === 1 ? 'rating' : 'ratings'}`,
-    `${whole(assumptions)} ${assumptions === 1 ? 'assumption' : 'assumptions'} moved to either end`,
-    `${whole(signs)} signs of a fault in the record`,
-    `${whole(inputs)} inputs held against what is built`,
+    say`${whole(rows)} ${rows === 1 ? say`row` : say`rows`} held against a limit`,
+    say`${whole(devices)} fitted ${devices === 1 ? say`rating` : say`ratings`}`,
+    say`${whole(assumptions)} ${assumptions === 1 ? say`assumption` : say`assumptions`} moved to either end`,
+    say`${whole(signs)} signs of a fault in the record`,
+    say`${whole(inputs)} inputs held against what is built`,
   ];
-  const open = notJudged === 0 ? 'none was left unjudged' : `${whole(notJudged)} could not be judged`;
-  return `${whole(rows + devices + assumptions + signs + inputs)} rules were evaluated: ${parts.join(', ')}; ${open}.`;
+  const open = notJudged === 0 ? say`none was left unjudged` : say`${whole(notJudged)} could not be judged`;
+  return say`${whole(rows + devices + assumptions + signs + inputs)} rules were evaluated: ${parts.join(', ')}; ${open}.`;
 }

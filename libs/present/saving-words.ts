@@ -1,31 +1,32 @@
 import type { Money, MoneyQuantity, PickChange, Recommended, SavingCase, SavingRange } from '#libs/engine/index.js';
 import { formatNumber, formatQuantity } from './format-number.js';
-import { NO_GUARANTEE } from './money-words.js';
+import { say, words } from './language.js';
+import { noGuarantee } from './money-words.js';
 
 /** How each case of a saving reads after its amount. */
-export const SAVING_CASE_WORDS: Record<SavingCase['name'], string> = {
+export const SAVING_CASE_WORDS: Record<SavingCase['name'], string> = words({
   ideal: 'with an ideal controller',
   'one interval late': 'deciding one interval late',
   '95 % available': 'out one day in twenty',
   'one stage out': 'with one stage out',
-};
+});
 
 /** What is moved, as a noun. */
-export const MONEY_QUANTITY_WORDS: Record<MoneyQuantity, string> = {
+export const MONEY_QUANTITY_WORDS: Record<MoneyQuantity, string> = words({
   load: 'load',
   capacitance: 'capacitance',
   stages: 'stages',
   'fault level': 'fault level',
   costs: 'costs',
   tariff: 'tariff',
-};
+});
 
 /** The ways that are weighed, as they are named within a sentence. */
-export const WAY_WORDS: Record<Recommended, string> = {
+export const WAY_WORDS: Record<Recommended, string> = words({
   'do nothing': 'doing nothing',
   "keep today's bank": 'keeping today’s bank',
   'new bank': 'a new bank',
-};
+});
 
 /**
  * The saving that is told first: with a range the lower of the ideal controller's and the late one's.
@@ -45,7 +46,7 @@ export function headlineSaving({ savingRange, savingPerYear }: Money): number {
 export function savingWords(saving: SavingRange, currency: string | null): string[] {
   const amount = (value: number): string => formatQuantity(value, currency ?? '', 'whole');
   return [
-    `${amount(saving.headlinePerYear)} a year, ${NO_GUARANTEE}`,
+    say`${amount(saving.headlinePerYear)} a year, ${noGuarantee()}`,
     ...saving.cases.map(({ name, savingPerYear }) => `${amount(savingPerYear)} ${SAVING_CASE_WORDS[name]}`),
   ];
 }
@@ -59,6 +60,6 @@ export function pickChangeWords(change: PickChange): string[] {
   const { quantity, lowFactor, highFactor, nameBelow, nameAbove } = change;
   const noun = MONEY_QUANTITY_WORDS[quantity];
   const end = (factor: number | null, name: Recommended | null, side: string): string[] =>
-    factor === null || name === null ? [] : [`${WAY_WORDS[name]} with ${noun} ${side} × ${formatNumber(factor)}`];
-  return [...end(lowFactor, nameBelow, 'below'), ...end(highFactor, nameAbove, 'above')];
+    factor === null || name === null ? [] : [say`${WAY_WORDS[name]} with ${noun} ${side} × ${formatNumber(factor)}`];
+  return [...end(lowFactor, nameBelow, say`below`), ...end(highFactor, nameAbove, say`above`)];
 }

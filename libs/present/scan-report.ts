@@ -1,4 +1,5 @@
 import type { ScannedLevel } from '#libs/engine/index.js';
+import { standingWords } from './duty-bars.js';
 import { formatNumber, formatQuantity } from './format-number.js';
 import { plainName } from './plain-name.js';
 import { finished, tableLines } from './terminal-lines.js';
@@ -12,7 +13,7 @@ export function scanReport(levels: readonly ScannedLevel[]): string {
   const first = levels[0];
   if (first === undefined) return '';
   const severalBuses = levels.some(({ bus }) => bus !== first.bus);
-  const severalStandings = levels.some(({ corner }) => corner.standing !== undefined);
+  const severalStandings = levels.some(({ corner }) => standingWords(corner).length > 0);
   const head = [
     ...(severalBuses ? ['bus'] : []),
     'fault level',
@@ -31,7 +32,7 @@ export function scanReport(levels: readonly ScannedLevel[]): string {
     formatQuantity(corner.dampingKw, 'kW'),
     formatQuantity(parallelOrderH, ''),
     formatQuantity(peakOhm, 'Ω'),
-    ...(severalStandings ? [plainName(corner.standing ?? 'normal')] : []),
+    ...(severalStandings ? [standingWords(corner).join(', ') || 'normal'] : []),
   ]);
   return finished([
     `Impedance at ${severalBuses ? 'each bus' : 'the bus'} with ${formatQuantity(first.levelKvar, 'kvar')} connected; the first row is the nominal case.`,

@@ -1,6 +1,7 @@
 import type { BankOutcome, DeviceName, DeviceRow } from '#libs/engine/index.js';
-import { formatNumber, formatQuantity, GAP } from './format-number.js';
+import { formatNumber, formatQuantity } from './format-number.js';
 import { groupName } from './group-name.js';
+import { say } from './language.js';
 
 /** An item to be bought, by its rating. */
 export interface MaterialLine {
@@ -27,18 +28,18 @@ function groupLines({ bank, site, result }: BankOutcome, group: number): Materia
   const each = (item: string, rating: string | null, times = 1): MaterialLine[] =>
     rating === null ? [] : [{ item: `${item}${where}`, number: formatNumber(times * of.count, 'whole'), rating }];
   const frequency = formatQuantity(site.frequencyHz, 'Hz', 'given');
-  const category = bank.ambientCategory === null ? 'category by the place' : `category ${bank.ambientCategory}`;
+  const category = bank.ambientCategory === null ? say`category by the place` : say`category ${bank.ambientCategory}`;
   const charge = result.charge.stages[group]!;
-  const loss = charge.dischargeLossW === null ? '' : `, ${formatQuantity(charge.dischargeLossW, 'W')} or more`;
+  const loss = charge.dischargeLossW === null ? '' : say`, ${formatQuantity(charge.dischargeLossW, 'W')} or more`;
   return [
     ...each(
-      'capacitor, three-phase',
-      `${formatQuantity(of.ratedKvar, 'kvar', 'given')} at ${formatQuantity(of.ratedV, 'V', 'given')}, ${frequency}, ${formatQuantity(charge.capacitanceUf, 'µF')} a delta phase, ${category}`,
+      say`capacitor, three-phase`,
+      say`${formatQuantity(of.ratedKvar, 'kvar', 'given')} at ${formatQuantity(of.ratedV, 'V', 'given')}, ${frequency}, ${formatQuantity(charge.capacitanceUf, 'µF')} a delta phase, ${category}`,
     ),
-    ...(of.reactorPct > 0 ? each('reactor, three-phase', reactorRating(of.reactorPct, row)) : []),
-    ...(of.fixed ? [] : each('switch for capacitors', switchRating(row))),
-    ...each('fuses, set of three', betweenWords(row('fuse.rating'))),
-    ...each('discharge resistor, a delta phase', `${formatQuantity(charge.requiredOhm, 'Ω')} or less${loss}`, 3),
+    ...(of.reactorPct > 0 ? each(say`reactor, three-phase`, reactorRating(of.reactorPct, row)) : []),
+    ...(of.fixed ? [] : each(say`switch for capacitors`, switchRating(row))),
+    ...each(say`fuses, set of three`, betweenWords(row('fuse.rating'))),
+    ...each(say`discharge resistor, a delta phase`, say`${formatQuantity(charge.requiredOhm, 'Ω')} or less${loss}`, 3),
   ];
 }
 
@@ -49,8 +50,8 @@ function reactorRating(reactorPct: number, row: Rows): string {
   const linear = leastWords(row('reactor.linearity'));
   return [
     formatQuantity(reactorPct, '%', 'given'),
-    ...(thermal === null ? [] : [`${thermal} without end`]),
-    ...(linear === null ? [] : [`linear to ${linear}`]),
+    ...(thermal === null ? [] : [say`${thermal} without end`]),
+    ...(linear === null ? [] : [say`linear to ${linear}`]),
   ].join(', ');
 }
 
@@ -58,7 +59,7 @@ function switchRating(row: Rows): string | null {
   const kvar = leastWords(row('switch.kvar'));
   const peak = leastWords(row('switch.peak'));
   if (kvar === null) return null;
-  return peak === null ? `${kvar} or more` : `${kvar} or more, makes ${peak} peak`;
+  return peak === null ? say`${kvar} or more` : say`${kvar} or more, makes ${peak} peak`;
 }
 
 function leastWords(row: DeviceRow | undefined): string | null {
@@ -67,7 +68,7 @@ function leastWords(row: DeviceRow | undefined): string | null {
 
 function betweenWords(row: DeviceRow | undefined): string | null {
   if (typeof row?.least !== 'number' || typeof row.most !== 'number') return null;
-  return `${formatNumber(row.least)} to ${formatQuantity(row.most, row.unit)}`;
+  return say`${formatNumber(row.least)} to ${formatQuantity(row.most, row.unit)}`;
 }
 
 function bankLines({ bank, result }: BankOutcome): MaterialLine[] {
@@ -84,25 +85,25 @@ function bankLines({ bank, result }: BankOutcome): MaterialLine[] {
     ...(ways === 0
       ? []
       : one(
-          'controller',
-          `${formatNumber(ways, 'whole')}${GAP}${ways === 1 ? 'way' : 'ways'} or more, settings of section 16`,
+          say`controller`,
+          say`${formatNumber(ways, 'whole')}\u00a0${ways === 1 ? say`way` : say`ways`} or more, settings of section 16`,
         )),
     ...(ways === 0
       ? []
       : one(
-          'current transformer at the incomer',
+          say`current transformer at the incomer`,
           typeof response?.value === 'number'
-            ? `${formatQuantity(response.value, 'A')} at its secondary for the response threshold`
-            : 'ratio by the incomer’s current, class for a power-factor controller',
+            ? say`${formatQuantity(response.value, 'A')} at its secondary for the response threshold`
+            : say`ratio by the incomer’s current, class for a power-factor controller`,
         )),
-    ...one('upstream device', `${rated} or more${breaking === null ? '' : `, breaks ${breaking}`}`),
-    ...one('conductors and disconnector', `${rated} or more`),
-    ...one('busbars', peak === null ? null : `${rated} or more, withstand ${peak} peak`),
-    ...one('cabinet', air === null ? null : `${air} of air or more`),
+    ...one(say`upstream device`, say`${rated} or more${breaking === null ? '' : say`, breaks ${breaking}`}`),
+    ...one(say`conductors and disconnector`, say`${rated} or more`),
+    ...one(say`busbars`, peak === null ? null : say`${rated} or more, withstand ${peak} peak`),
+    ...one(say`cabinet`, air === null ? null : say`${air} of air or more`),
     {
-      item: 'label of stored charge',
+      item: say`label of stored charge`,
       number: formatNumber(result.bank.stages.length, 'whole'),
-      rating: 'on each stage, with its waiting time of section 7.3',
+      rating: say`on each stage, with its waiting time of section 7.3`,
     },
   ];
 }

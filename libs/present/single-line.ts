@@ -1,5 +1,7 @@
 import type { BankOutcome, EstimateOutcome, EstimateResult, Outcome, Result, StageGroup } from '#libs/engine/index.js';
+import { engineName } from './engine-name.js';
 import { formatNumber, formatQuantity, formatRange, GAP } from './format-number.js';
+import { say } from './language.js';
 import { plainName } from './plain-name.js';
 
 /** A feeder of the board with its trade symbol and what is known of it. */
@@ -51,18 +53,18 @@ export function singleLine(outcome: Outcome | EstimateOutcome): SingleLine {
   const { site, result, bank } = outcome;
   const { faultLevelMva } = site.supply;
   const drawn = {
-    grid: `grid ${formatRange({ low: faultLevelMva.min, high: faultLevelMva.max }, 'MVA')}`,
+    grid: say`grid ${formatRange({ low: faultLevelMva.min, high: faultLevelMva.max }, 'MVA')}`,
     transformers: transformers(outcome),
     meteredAt: site.meteredAt,
-    bus: `${formatQuantity(site.nominalV, 'V', 'given')}, at most ${formatQuantity(site.highestV, 'V', 'given')}`,
+    bus: say`${formatQuantity(site.nominalV, 'V', 'given')}, at most ${formatQuantity(site.highestV, 'V', 'given')}`,
     faultLevel: {
-      most: `${formatQuantity(result.network.shortCircuitMva, 'MVA')} at the bus`,
-      least: `${formatQuantity(result.network.shortCircuitMinMva, 'MVA')} at the least`,
+      most: say`${formatQuantity(result.network.shortCircuitMva, 'MVA')} at the bus`,
+      least: say`${formatQuantity(result.network.shortCircuitMinMva, 'MVA')} at the least`,
     },
     feeders: feeders(outcome),
     stages: stageSymbols(bank.groups),
     bank: bank.groups.map((group) => groupWords(outcome, group)),
-    notEntered: 'Dashed: needed, not entered.',
+    notEntered: say`Dashed: needed, not entered.`,
   };
   return { ...drawn, sentence: sentenceOf(drawn) };
 }
@@ -70,7 +72,7 @@ export function singleLine(outcome: Outcome | EstimateOutcome): SingleLine {
 function transformers({ site }: BankOutcome): SingleLine['transformers'] {
   return site.supply.transformers.map(({ ratedKva, impedancePct }) => ({
     name: formatQuantity(ratedKva, 'kVA', 'given'),
-    detail: `impedance ${formatQuantity(impedancePct, '%', 'given')}`,
+    detail: say`impedance ${formatQuantity(impedancePct, '%', 'given')}`,
   }));
 }
 
@@ -81,9 +83,9 @@ function feeders({ site, result }: Outcome | EstimateOutcome): Feeder[] {
       ? [
           {
             symbol: 'motor',
-            name: 'motors',
-            short: 'motors',
-            detail: `${formatQuantity(motorSharePct, '%', 'given')} of damping load`,
+            name: say`motors`,
+            short: say`motors`,
+            detail: say`${formatQuantity(motorSharePct, '%', 'given')} of damping load`,
           },
         ]
       : [];
@@ -93,32 +95,32 @@ function feeders({ site, result }: Outcome | EstimateOutcome): Feeder[] {
   const converters: Feeder[] = each.map(({ name, fundamentalA, spectrum, orders }, at) => ({
     symbol: 'converter',
     name: plainName(name),
-    short: `load ${at + 1}`,
-    detail: `${formatQuantity(fundamentalA, 'A', 'given')}, ${orders === undefined ? (spectrum ?? 'orders given').replaceAll('-', ' ') : 'orders given'}`,
+    short: say`load ${at + 1}`,
+    detail: `${formatQuantity(fundamentalA, 'A', 'given')}, ${orders === undefined && spectrum !== undefined ? engineName(spectrum.replaceAll('-', ' ')) : say`orders given`}`,
   }));
   if (rest.length > 0) {
     const sumA = rest.reduce((sum, { fundamentalA }) => sum + fundamentalA, 0);
     converters.push({
       symbol: 'converter',
-      name: `${rest.length} more`,
-      short: `${rest.length} more`,
+      name: say`${rest.length} more`,
+      short: say`${rest.length} more`,
       detail: formatQuantity(sumA, 'A', 'given'),
     });
   }
   const other: Feeder = {
     symbol: 'load',
-    name: 'other load',
-    short: 'other load',
+    name: say`other load`,
+    short: say`other load`,
     detail: greatestLoad(result),
   };
   return [...motors, ...converters, other];
 }
 
 function greatestLoad(result: Result | EstimateResult): string {
-  if (result.record !== null) return `site at most ${formatQuantity(result.record.maxKw, 'kW')}`;
+  if (result.record !== null) return say`site at most ${formatQuantity(result.record.maxKw, 'kW')}`;
   const { months, equipment } = result.estimate;
   const kw = months.length > 0 ? Math.max(...months.map(({ maxKw }) => maxKw)) : (equipment?.activeKw ?? 0);
-  return `site about ${formatQuantity(kw, 'kW')}, estimated`;
+  return say`site about ${formatQuantity(kw, 'kW')}, estimated`;
 }
 
 function stageSymbols(groups: readonly StageGroup[]): StageSymbol[] {
@@ -135,8 +137,9 @@ function stageSymbols(groups: readonly StageGroup[]): StageSymbol[] {
 }
 
 function groupWords(outcome: BankOutcome, group: StageGroup): string {
-  const reactor = group.reactorPct > 0 ? `reactors ${formatQuantity(group.reactorPct, '%', 'given')}` : 'no reactors';
-  const fixed = group.fixed ? ', never switched' : '';
+  const reactor =
+    group.reactorPct > 0 ? say`reactors ${formatQuantity(group.reactorPct, '%', 'given')}` : say`no reactors`;
+  const fixed = group.fixed ? say`, never switched` : '';
   return `${group.count}${GAP}×${GAP}${bothRatings(outcome, group)}, ${reactor}${fixed}`;
 }
 
@@ -147,21 +150,21 @@ function groupWords(outcome: BankOutcome, group: StageGroup): string {
  * @returns "50 kvar at 480 V, 37.3 kvar at 400 V"
  */
 export function bothRatings(outcome: BankOutcome, group: StageGroup): string {
-  const rated = `${formatQuantity(group.ratedKvar, 'kvar', 'given')} at${GAP}${formatQuantity(group.ratedV, 'V', 'given')}`;
+  const rated = say`${formatQuantity(group.ratedKvar, 'kvar', 'given')} at\u00a0${formatQuantity(group.ratedV, 'V', 'given')}`;
   const stage = outcome.result.bank.stages.find(
     (one) => one.ratedKvar === group.ratedKvar && one.ratedV === group.ratedV && one.reactorPct === group.reactorPct,
   );
   if (stage === undefined) return rated;
-  const at = `at${GAP}${formatQuantity(outcome.site.nominalV, 'V', 'given')}`;
+  const at = say`at\u00a0${formatQuantity(outcome.site.nominalV, 'V', 'given')}`;
   return `${rated}, ${formatQuantity(stage.effectiveKvar, 'kvar')} ${at}`;
 }
 
 function sentenceOf(drawn: Omit<SingleLine, 'sentence'>): string {
   const supply =
     drawn.transformers.length === 0
-      ? `The ${drawn.grid} feeds the board directly.`
-      : `The ${drawn.grid} feeds the board through ${drawn.transformers.map(({ name, detail }) => `${name}, ${detail}`).join('; ')}.`;
+      ? say`The ${drawn.grid} feeds the board directly.`
+      : say`The ${drawn.grid} feeds the board through ${drawn.transformers.map(({ name, detail }) => `${name}, ${detail}`).join('; ')}.`;
   const loads = drawn.feeders.map(({ name, detail }) => `${name} (${detail})`).join(', ');
-  const bank = drawn.bank.length === 0 ? 'No bank.' : `Bank: ${drawn.bank.join('; ')}.`;
-  return `Single-line diagram. ${supply} Board: ${drawn.bus}. Feeders: ${loads}. ${bank}`;
+  const bank = drawn.bank.length === 0 ? say`No bank.` : say`Bank: ${drawn.bank.join('; ')}.`;
+  return say`Single-line diagram. ${supply} Board: ${drawn.bus}. Feeders: ${loads}. ${bank}`;
 }

@@ -4,7 +4,7 @@ import { formatMoney, formatPayback } from './money-words.js';
 import { plainName } from './plain-name.js';
 import { headlineSaving, WAY_WORDS } from './saving-words.js';
 import { finished, tableLines } from './terminal-lines.js';
-import { NO_PERMISSION, verdictWords } from './verdict-words.js';
+import { noPermission, verdictWords } from './verdict-words.js';
 
 /** One site of several: what is proposed, and what it is worth. */
 export interface SiteRow {
@@ -73,7 +73,7 @@ export function sitesReport(rows: readonly SiteRow[]): string {
     ...tableLines(flush(HEAD), cells.map(flush)),
     '',
     ...(rows.some(({ isEstimate }) => isEstimate) ? ['A site without a meter’s record is an estimate.'] : []),
-    NO_PERMISSION,
+    noPermission(),
   ]);
 }
 

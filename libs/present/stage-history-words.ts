@@ -1,17 +1,18 @@
 import type { StageHistory } from '#libs/engine/index.js';
 import { formatQuantity } from './format-number.js';
+import { say, words } from './language.js';
 import { formatDate } from './local-stamp.js';
 import { plainName } from './plain-name.js';
 
 /** Heads of the table of measured stages. */
-export const HISTORY_HEADS = [
+export const HISTORY_HEADS = words([
   'stage',
   'measured',
   'kvar at rated voltage',
   'loss',
   'unbalance',
   'loss a year',
-] as const;
+] as const);
 
 /**
  * The measured stages of an installed bank, one row a measurement.
@@ -21,14 +22,14 @@ export const HISTORY_HEADS = [
 export function historyRows(histories: readonly StageHistory[]): string[][] {
   return histories.flatMap(({ group, stage, points, lossPctPerYear, rateFrom }) =>
     points.map((point, k) => [
-      `group ${group + 1}, stage ${stage}`,
+      say`group ${group + 1}, stage ${stage}`,
       `${formatDate(point.date)}${point.instrument === null ? '' : `, ${plainName(point.instrument)}`}`,
       formatQuantity(point.ratedKvar, 'kvar'),
       formatQuantity(point.lossPct, '%'),
       formatQuantity(point.unbalancePct, '%'),
       k < points.length - 1 || lossPctPerYear === null
         ? '–'
-        : `${formatQuantity(lossPctPerYear, '%')}${rateFrom === 'nameplate' ? ' since commissioning' : ''}`,
+        : `${formatQuantity(lossPctPerYear, '%')}${rateFrom === 'nameplate' ? say` since commissioning` : ''}`,
     ]),
   );
 }

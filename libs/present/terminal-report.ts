@@ -20,7 +20,7 @@ import { remarkConsequence, remarkSentence } from './remark-words.js';
 import { spareWaysLines } from './spare-ways-lines.js';
 import { HISTORY_HEADS, historyRows } from './stage-history-words.js';
 import { finished, tableLines, wrapped } from './terminal-lines.js';
-import { countDuties, NO_PERMISSION, verdictWords } from './verdict-words.js';
+import { countDuties, noPermission, verdictWords } from './verdict-words.js';
 
 const LABEL_WIDTH = 26;
 
@@ -38,7 +38,7 @@ export function resultReport(outcome: Outcome): string {
   const lines = [
     plainName(site.name),
     `Proposed: ${proposedWords(outcome)}`,
-    `Verdict: ${verdictWords(result.verdict)}. ${NO_PERMISSION}`,
+    `Verdict: ${verdictWords(result.verdict)}. ${noPermission()}`,
     '',
     ...recordLines(result.record, zone),
     row(
@@ -80,7 +80,7 @@ export function estimateReport(outcome: EstimateOutcome): string {
     plainName(site.name),
     'ESTIMATE, without a meter’s record',
     `Proposed, ${estimateWords(outcome)}`,
-    `Verdict: ${verdictWords(result.verdict)}. ${NO_PERMISSION}`,
+    `Verdict: ${verdictWords(result.verdict)}. ${noPermission()}`,
     '',
     ...needLines(outcome),
     row(

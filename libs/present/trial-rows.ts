@@ -1,9 +1,11 @@
 import type { ReactorTrial } from '#libs/engine/index.js';
+import { engineName } from './engine-name.js';
 import { formatNumber, formatQuantity, formatRange } from './format-number.js';
+import { say, words } from './language.js';
 import { verdictWords } from './verdict-words.js';
 
 /** Names of the columns of `trialRows`. */
-export const TRIAL_HEADS = [
+export const TRIAL_HEADS = words([
   'reactors, rating',
   'tuned',
   'peaks, order',
@@ -12,7 +14,7 @@ export const TRIAL_HEADS = [
   'ripple left',
   'verdict',
   'why',
-] as const;
+] as const);
 
 /**
  * The same stages at each reactor ratio, and why each is or is not the bank's.
@@ -38,8 +40,8 @@ export function trialRows(trials: readonly ReactorTrial[]): string[][] {
  */
 export function trialName({ reactorPct, reactorQuality, ratedV, filter }: ReactorTrial): string {
   const ratio =
-    reactorQuality === null ? 'none' : `${formatQuantity(reactorPct, '%')}, X/R ${formatNumber(reactorQuality)}`;
-  return `${filter ? 'filter ' : ''}${ratio}, ${formatQuantity(ratedV, 'V')}`;
+    reactorQuality === null ? say`none` : `${formatQuantity(reactorPct, '%')}, X/R ${formatNumber(reactorQuality)}`;
+  return `${filter ? say`filter ` : ''}${ratio}, ${formatQuantity(ratedV, 'V')}`;
 }
 
 /**
@@ -66,16 +68,16 @@ export function trialReason(trial: ReactorTrial): string {
   const duty =
     worstDuty === null || worstRatio === null
       ? ''
-      : `: ${worstDuty}, ${formatQuantity(100 * worstRatio, '%', 'whole')}`;
+      : `: ${engineName(worstDuty)}, ${formatQuantity(100 * worstRatio, '%', 'whole')}`;
   const words: Record<ReactorTrial['why'], string> = {
-    chosen: 'the bank’s own',
-    overLimit: `over a limit${duty}`,
-    nearLimit: `near a limit${duty}`,
-    ripple: `leaves ${formatQuantity(100 * (rippleShare ?? 0), '%', 'whole')} of the ripple signal`,
-    nearPeak: `a peak at order ${formatNumber(nearPeakH ?? 0)} beside order ${formatNumber(nearOrderH ?? 0)}`,
-    openAnyway: 'left open by the data, as every ratio is',
-    givesLess: 'within limits, with less kvar from the same stages',
-    takesMore: 'within limits, at more kvar, reactor or voltage than needed',
+    chosen: say`the bank’s own`,
+    overLimit: say`over a limit${duty}`,
+    nearLimit: say`near a limit${duty}`,
+    ripple: say`leaves ${formatQuantity(100 * (rippleShare ?? 0), '%', 'whole')} of the ripple signal`,
+    nearPeak: say`a peak at order ${formatNumber(nearPeakH ?? 0)} beside order ${formatNumber(nearOrderH ?? 0)}`,
+    openAnyway: say`left open by the data, as every ratio is`,
+    givesLess: say`within limits, with less kvar from the same stages`,
+    takesMore: say`within limits, at more kvar, reactor or voltage than needed`,
   };
   return words[why];
 }

@@ -1,17 +1,22 @@
 import type { Duty, Verdict } from '#libs/engine/index.js';
+import { say, words } from './language.js';
 
 /** The verdict as a person reads it. */
-export const VERDICT_WORDS: Record<Verdict, string> = {
+export const VERDICT_WORDS: Record<Verdict, string> = words({
   clear: 'within limits',
   watch: 'near a limit',
   avoid: 'over a limit',
-};
+});
 
 /** What stands where a row has no limit. */
-export const NOT_JUDGED = 'not judged';
+export function notJudged(): string {
+  return say`not judged`;
+}
 
 /** Stands once on every paper. */
-export const NO_PERMISSION = 'That no computed limit was passed is not permission to energise.';
+export function noPermission(): string {
+  return say`That no computed limit was passed is not permission to energise.`;
+}
 
 /**
  * The verdict of one row in words.
@@ -19,7 +24,7 @@ export const NO_PERMISSION = 'That no computed limit was passed is not permissio
  * @returns words for people
  */
 export function verdictWords(verdict: Verdict | null): string {
-  return verdict === null ? NOT_JUDGED : VERDICT_WORDS[verdict];
+  return verdict === null ? notJudged() : VERDICT_WORDS[verdict];
 }
 
 /** How many rows were held against a limit, and how they came out. */

@@ -1,6 +1,7 @@
 import { localTime, type Outcome } from '#libs/engine/index.js';
 import type { Chart, Mark, Series } from './chart.js';
 import { formatNumber, formatQuantity } from './format-number.js';
+import { say } from './language.js';
 import { dayBeginS, formatClock, formatWeekday } from './local-stamp.js';
 import { linearAxis } from './ticks.js';
 
@@ -28,14 +29,13 @@ export function worstDay(outcome: Outcome): Chart {
   return {
     id: 'worstDay',
     finding: finding(outcome, name),
-    caption: `${name}, by the site’s clock. Heavy: the load without the bank. Thin: with it. Dashed: needed. Grey: connected.`,
-    sentence:
-      `On ${name} the load draws between ${formatQuantity(columns.least.load, 'kvar')} and ` +
-      `${formatQuantity(columns.most.load, 'kvar')}; with the bank between ${formatQuantity(columns.least.after, 'kvar')} and ` +
-      `${formatQuantity(columns.most.after, 'kvar')} are left.`,
+    caption: say`${name}, by the site’s clock. Heavy: the load without the bank. Thin: with it. Dashed: needed. Grey: connected.`,
+    sentence: say`On ${name} the load draws between ${formatQuantity(columns.least.load, 'kvar')} and
+        ${formatQuantity(columns.most.load, 'kvar')}; with the bank between ${formatQuantity(columns.least.after, 'kvar')} and
+        ${formatQuantity(columns.most.after, 'kvar')} are left.`,
     x: clockAxis(outcome, day),
     // room for the label above the highest point
-    y: linearAxis('at the bus', 'kvar', { least, most: most * 1.08 }),
+    y: linearAxis(say`at the bus`, 'kvar', { least, most: most * 1.08 }),
     equalScales: false,
     series: daySeries(columns),
     marks: dayMarks(columns),
@@ -124,7 +124,7 @@ function clockAxis(outcome: Outcome, day: DayOfRecord): Chart['x'] {
     const clock = atS === lengthS ? '24:00' : formatClock(localTime(outcome.zone, day.beginS + atS).secondOfDay);
     ticks.push({ at: atS, text: clock });
   }
-  return { label: 'time of day', unit: '', scale: 'linear', from: 0, to: lengthS, ticks };
+  return { label: say`time of day`, unit: '', scale: 'linear', from: 0, to: lengthS, ticks };
 }
 
 function daySeries(columns: DayColumns): Series[] {
@@ -144,7 +144,7 @@ function dayMarks(columns: DayColumns): Mark[] {
   });
   const x = columns.x[at] ?? 0;
   const load = columns.load[at] ?? 0;
-  return [{ kind: 'label', x, y: load, text: `without ${formatNumber(load)}`, side: 'above', part: 'site' }];
+  return [{ kind: 'label', x, y: load, text: say`without ${formatNumber(load)}`, side: 'above', part: 'site' }];
 }
 
 function dayTable(outcome: Outcome, day: DayOfRecord): Chart['table'] {
@@ -164,12 +164,12 @@ function dayTable(outcome: Outcome, day: DayOfRecord): Chart['table'] {
     ]);
     nextS += LISTED_EVERY_S;
   }
-  const heads = ['begins', 'load kW', 'load kvar', 'needed kvar', 'connected kvar', 'left kvar'];
+  const heads = [say`begins`, say`load kW`, say`load kvar`, say`needed kvar`, say`connected kvar`, say`left kvar`];
   return { columns: heads.map((head, at) => ({ head, right: at > 0 })), rows };
 }
 
 function finding(outcome: Outcome, name: string): string {
   const worst = outcome.result.operation.worstIntervals[0];
-  if (worst === undefined) return `${name} has the greatest need, and the bank meets it`;
-  return `${name} is the worst day: ${formatQuantity(worst.shortfallKvar, 'kvar')} short of the target`;
+  if (worst === undefined) return say`${name} has the greatest need, and the bank meets it`;
+  return say`${name} is the worst day: ${formatQuantity(worst.shortfallKvar, 'kvar')} short of the target`;
 }

@@ -1,5 +1,6 @@
 import { type Figure, type Outcome, tanFromPowerFactor } from '#libs/engine/index.js';
 import { workingOf } from './figure-words.js';
+import { say } from './language.js';
 
 /** One interval worked step by step. */
 export interface WorkedInterval {
@@ -30,26 +31,26 @@ export function workedInterval(outcome: Outcome): WorkedInterval {
   const tanSet = tanFromPowerFactor(set);
   const smallest = Math.min(...result.bank.stages.map((stage) => stage.effectiveKvar));
   const steps = [
-    measured('active power at the bus', p, 'kW'),
-    measured('reactive power of the load at the bus', q, 'kvar'),
-    measured('connected by the bank', b, 'kvar'),
-    step('tan φ of the target', [tan, ''], '√(1 / λ^2 − 1)', [['λ', target, '']]),
-    step('needed at the bus for the target', [Math.max(0, q - p * tan), 'kvar'], 'max(0, Q − P · t)', [
+    measured(say`active power at the bus`, p, 'kW'),
+    measured(say`reactive power of the load at the bus`, q, 'kvar'),
+    measured(say`connected by the bank`, b, 'kvar'),
+    step(say`tan φ of the target`, [tan, ''], '√(1 / λ^2 − 1)', [['λ', target, '']]),
+    step(say`needed at the bus for the target`, [Math.max(0, q - p * tan), 'kvar'], 'max(0, Q − P · t)', [
       ['Q', q, 'kvar'],
       ['P', p, 'kW'],
       ['t', tan, ''],
     ]),
-    step('left after the bank', [q - b, 'kvar'], 'Q − B', [
+    step(say`left after the bank`, [q - b, 'kvar'], 'Q − B', [
       ['Q', q, 'kvar'],
       ['B', b, 'kvar'],
     ]),
-    step('short of the target at the bus', [Math.max(0, q - b - p * tan), 'kvar'], 'max(0, Q − B − P · t)', [
+    step(say`short of the target at the bus`, [Math.max(0, q - b - p * tan), 'kvar'], 'max(0, Q − B − P · t)', [
       ['Q', q, 'kvar'],
       ['B', b, 'kvar'],
       ['P', p, 'kW'],
       ['t', tan, ''],
     ]),
-    step('the controller’s deviation', [q - p * tanSet - b, 'kvar'], 'Q − P · √(1 / λ_s^2 − 1) − B', [
+    step(say`the controller’s deviation`, [q - p * tanSet - b, 'kvar'], 'Q − P · √(1 / λ_s^2 − 1) − B', [
       ['Q', q, 'kvar'],
       ['P', p, 'kW'],
       ['λ_s', set, ''],
@@ -59,7 +60,7 @@ export function workedInterval(outcome: Outcome): WorkedInterval {
   if (result.bank.stages.length > 0) {
     const ratio = result.control.responseRatio;
     steps.push(
-      step('deviation it answers', [ratio * smallest, 'kvar'], 'a · Q_s', [
+      step(say`deviation it answers`, [ratio * smallest, 'kvar'], 'a · Q_s', [
         ['a', ratio, ''],
         ['Q_s', smallest, 'kvar'],
       ]),

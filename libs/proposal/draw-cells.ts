@@ -1,4 +1,5 @@
 import type { CellFill, Chart } from '#libs/present/chart.js';
+import { say } from '#libs/present/language.js';
 import { HAIR, INK, PAPER, STROKE, WASH } from './ink.js';
 import { hatch } from './marks.js';
 import type { Paper } from './paper.js';
@@ -98,15 +99,15 @@ function fillCell(paper: Paper, { fill, text }: { fill: CellFill; text: string }
  */
 export function drawCellKey(paper: Paper, at: { x: number; y: number }): void {
   const entries: [CellFill, string][] = [
-    ['blank', 'to 50'],
-    ['quiet', 'to 80'],
-    ['hatch', 'near the limit, to 100'],
-    ['solid', 'over the limit'],
+    ['blank', say`to 50`],
+    ['quiet', say`to 80`],
+    ['hatch', say`near the limit, to 100`],
+    ['solid', say`over the limit`],
   ];
   paper.tagged('P', () => {
     let x = at.x;
-    paper.type.put(['% of limit'], AXIS, x, at.y + 8);
-    x += paper.type.width(['% of limit'], AXIS) + 12;
+    paper.type.put([say`% of limit`], AXIS, x, at.y + 8);
+    x += paper.type.width([say`% of limit`], AXIS) + 12;
     for (const [fill, words] of entries) {
       const box = { x, y: at.y, width: 20, height: CELL_HEIGHT };
       if (fill === 'hatch') hatch(paper.doc, box);

@@ -1,3 +1,4 @@
+import { say } from '#libs/present/language.js';
 import type { Feeder, SingleLine } from '#libs/present/single-line.js';
 import { INK, STROKE } from './ink.js';
 import { leading, type Paper } from './paper.js';
@@ -121,7 +122,7 @@ function meterBeside(paper: Paper, at: { x: number; y: number }): void {
   const right = drawMeter(paper.doc, at);
   const width = paper.type.width(['kWh'], { ...AXIS, size: 5.6 });
   paper.type.put(['kWh'], { ...AXIS, size: 5.6, ink: INK }, at.x + 19.5 - width / 2, at.y + 2);
-  paper.type.put(['meter'], AXIS, right + 4, at.y + 3);
+  paper.type.put([say`meter`], AXIS, right + 4, at.y + 3);
 }
 
 function labelTransformers(paper: Paper, diagram: SingleLine, at: { x: number; y: number }): void {
@@ -137,7 +138,7 @@ function labelTransformers(paper: Paper, diagram: SingleLine, at: { x: number; y
     paper.type.put([`${name}, ${detail}`], ON_CHART, at.x, at.y - 4 + n * 11);
   });
   if (all.length > MOST_TRANSFORMERS) {
-    paper.type.put([`and ${all.length - MOST_TRANSFORMERS} more`], AXIS, at.x, at.y - 4 + MOST_TRANSFORMERS * 11);
+    paper.type.put([say`and ${all.length - MOST_TRANSFORMERS} more`], AXIS, at.x, at.y - 4 + MOST_TRANSFORMERS * 11);
   }
 }
 

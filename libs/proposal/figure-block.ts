@@ -1,4 +1,5 @@
 import type { Chart } from '#libs/present/chart.js';
+import { say } from '#libs/present/language.js';
 import { drawChart } from './draw-chart.js';
 import { SOFT } from './ink.js';
 import { LABEL, leading, type Paper, STRONG } from './paper.js';
@@ -27,7 +28,7 @@ export interface Span {
  */
 export function captionLines(paper: Paper, { number, chart }: Numbered, width: number): Line[] {
   const caption: Piece = { text: chart.caption, weight: 'regular', ink: SOFT };
-  return paper.type.wrap([`Figure ${number}\u00a0\u00a0 ${chart.finding}. `, caption], HEAD, width);
+  return paper.type.wrap([say`Figure ${number}\u00a0\u00a0 ${chart.finding}. `, caption], HEAD, width);
 }
 
 /** Draws lines above a figure from a top edge. */

@@ -1,10 +1,12 @@
 import { type EstimateOutcome, isEstimate, type Outcome } from '#libs/engine/index.js';
 import { estimateSpan } from '#libs/present/estimate-words.js';
+import { say, words } from '#libs/present/language.js';
 import { formatMoment } from '#libs/present/local-stamp.js';
 import { plainName } from '#libs/present/plain-name.js';
 import { HAIR, INK, STROKE } from './ink.js';
 import { LABEL, leading, type Paper, STRONG } from './paper.js';
 import type { ProposalFrame, ProposalState } from './proposal-frame.js';
+import { stateWords } from './state-words.js';
 import type { Line, Piece, Style } from './typesetter.js';
 
 const FIRST_BASELINE = 36;
@@ -14,13 +16,13 @@ const PAGE_ROOM = 90;
 const HASH_ROOM = 215;
 
 /** What a paper of each state may be used for. */
-const STANDING: Record<ProposalState, string> = {
+const STANDING: Record<ProposalState, string> = words({
   'draft, not reviewed': 'A draft is not for construction.',
   'for review': 'Under review: not for construction.',
   approved: 'Approved; what was accepted stands in section 2.',
   superseded: 'Superseded: a later revision counts.',
   withdrawn: 'Withdrawn: not for construction.',
-};
+});
 
 /** The lines of the header, broken for the width, and where the page below it begins. */
 export interface SetHeader {
@@ -35,11 +37,14 @@ export interface SetHeader {
 
 /** Breaks the header's lines for the page's width; the same on every page. */
 export function setHeader({ type, width }: Paper, frame: ProposalFrame, outcome: Outcome | EstimateOutcome): SetHeader {
-  const title: Piece[] = [`Proposal ${frame.number}, revision ${frame.revision}`, { text: `, ${frame.state}` }];
+  const title: Piece[] = [
+    say`Proposal ${frame.number}, revision ${frame.revision}`,
+    { text: `, ${stateWords(frame.state)}` },
+  ];
   const set = {
     title: type.wrap(title, HEAD, width - PAGE_ROOM),
     window: type.wrap([windowWords(outcome)], LABEL, width - HASH_ROOM),
-    hash: `content ${hashInFours(frame.contentHash)}, engine ${frame.engineVersion}`,
+    hash: say`content ${hashInFours(frame.contentHash)}, engine ${frame.engineVersion}`,
     site: plainName(outcome.site.name),
     note: STANDING[frame.state],
   };
@@ -48,9 +53,9 @@ export function setHeader({ type, width }: Paper, frame: ProposalFrame, outcome:
 }
 
 function windowWords(outcome: Outcome | EstimateOutcome): string {
-  if (isEstimate(outcome)) return `ESTIMATE from ${estimateSpan(outcome)}; no record`;
+  if (isEstimate(outcome)) return say`ESTIMATE from ${estimateSpan(outcome)}; no record`;
   const { record, zone } = outcome;
-  return `record ${formatMoment(zone, record.firstS)} to ${formatMoment(zone, record.endS)}, ${zone.zone}`;
+  return say`record ${formatMoment(zone, record.firstS)} to ${formatMoment(zone, record.endS)}, ${zone.zone}`;
 }
 
 /** The first 16 digits in fours, as a reader can compare them. */
@@ -64,7 +69,7 @@ export function drawHeaders(paper: Paper, header: SetHeader): void {
   for (let page = start; page < start + count; page++) {
     paper.doc.switchToPage(page);
     paper.doc.markContent('Artifact', { type: 'Pagination' });
-    drawHeader(paper, header, `page ${page - start + 1} of ${count}`);
+    drawHeader(paper, header, say`page ${page - start + 1} of ${count}`);
     drawFooter(paper, header);
     paper.doc.endMarkedContent();
   }
@@ -95,7 +100,7 @@ function drawFooter(paper: Paper, header: SetHeader): void {
   const noteWidth = type.width([note], LABEL);
   doc.lineWidth(STROKE.hair).moveTo(left, y).lineTo(right, y).stroke(HAIR);
   // a name too long for the line stands in full on page 1
-  const site = type.width([header.site], LABEL) < right - left - noteWidth - 20 ? header.site : 'Site: see page 1';
+  const site = type.width([header.site], LABEL) < right - left - noteWidth - 20 ? header.site : say`Site: see page 1`;
   type.put([site], LABEL, left, y + 12);
   type.put([note], LABEL, right - noteWidth, y + 12);
 }

@@ -1,4 +1,5 @@
 import { type EstimateOutcome, isEstimate, monthSpan, type Outcome } from '#libs/engine/index.js';
+import { say } from '#libs/present/language.js';
 import { plainName } from '#libs/present/plain-name.js';
 import { needIssuable } from './missing-parts.js';
 import { drawHeaders, setHeader } from './page-header.js';
@@ -30,6 +31,7 @@ import { drawAccepted, drawSignatures } from './section-signatures.js';
 import { drawSiteActions } from './section-site-actions.js';
 import { drawStages } from './section-stages.js';
 import { drawVerification } from './section-verification.js';
+import { stateWords } from './state-words.js';
 
 export type { ProposalFrame } from './proposal-frame.js';
 
@@ -105,8 +107,8 @@ async function openDocument(outcome: Outcome | EstimateOutcome, frame: ProposalF
     // no font until one of ours is asked for, so that none of the built-in ones gets in
     font: null as unknown as string,
     info: {
-      Title: `Power-factor correction for ${plainName(outcome.site.name)}`,
-      Subject: `Proposal ${frame.number}, revision ${frame.revision}, ${frame.state}`,
+      Title: say`Power-factor correction for ${plainName(outcome.site.name)}`,
+      Subject: say`Proposal ${frame.number}, revision ${frame.revision}, ${stateWords(frame.state)}`,
       Keywords: frame.contentHash,
       Creator: `Varwright engine ${frame.engineVersion}`,
       Producer: `Varwright engine ${frame.engineVersion}`,

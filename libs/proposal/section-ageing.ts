@@ -1,5 +1,6 @@
 import type { BankOutcome } from '#libs/engine/index.js';
-import { AGEING_HEADS, AGEING_NOTE, ageingFinding, ageingRows } from '#libs/present/ageing-rows.js';
+import { AGEING_HEADS, ageingNote, ageingFinding, ageingRows } from '#libs/present/ageing-rows.js';
+import { say } from '#libs/present/language.js';
 import { HISTORY_HEADS, historyRows } from '#libs/present/stage-history-words.js';
 import { NOTE, type Paper } from './paper.js';
 import { type Column, drawTable } from './table.js';
@@ -16,9 +17,9 @@ export function drawAgeing(paper: Paper, outcome: BankOutcome): void {
   const { ageing } = outcome.result;
   const { measured } = ageing;
   if (ageing.cases.length === 0) return;
-  paper.heading('12.1', `Ageing: ${ageingFinding(ageing)}`, { level: 3 });
+  paper.heading('12.1', say`Ageing: ${ageingFinding(ageing)}`, { level: 3 });
   drawTable(paper, COLUMNS, ageingRows(ageing), { after: 4 });
-  paper.paragraph([AGEING_NOTE], { style: NOTE });
+  paper.paragraph([ageingNote()], { style: NOTE });
   if (measured.length === 0) return;
   const shares = [17, 25, 20, 12, 13, 21];
   const columns = HISTORY_HEADS.map((head, k) => ({
@@ -29,9 +30,9 @@ export function drawAgeing(paper: Paper, outcome: BankOutcome): void {
   drawTable(paper, columns, historyRows(measured), { after: 4 });
   paper.paragraph(
     [
-      'Measured stages: kvar of the capacitors at their rated voltage, Q_N · ΣC/(3 · C_N), from three line currents at the ' +
-        'bus voltage, the reactor taken off, or from three capacitances between terminals. Harmonics read with the ' +
-        'currents make a stage look larger.',
+      say`Measured stages: kvar of the capacitors at their rated voltage, Q_N · ΣC/(3 · C_N), from three line currents at the
+        bus voltage, the reactor taken off, or from three capacitances between terminals. Harmonics read with the
+        currents make a stage look larger.`,
     ],
     { style: NOTE },
   );

@@ -1,11 +1,12 @@
 import type { BankOutcome } from '#libs/engine/index.js';
+import { say } from '#libs/present/language.js';
 import { INK, STROKE } from './ink.js';
 import { leading, type Paper, STRONG } from './paper.js';
 import { BODY } from './typesetter.js';
 
 /** All cautions, always; the one section where hazard words stand. */
 export function drawCautions(paper: Paper, outcome: BankOutcome): void {
-  paper.heading('15', 'Cautions');
+  paper.heading('15', say`Cautions`);
   const indent = 20;
   outcome.result.cautions.forEach(({ text }, at) => {
     const lines = paper.type.wrap([text], BODY, paper.width - indent);

@@ -1,17 +1,18 @@
 import {
   type BankOutcome,
-  cornerSet,
   type EstimateOutcome,
   isEstimate,
   type Outcome,
+  siteCorners,
   type Verdict,
 } from '#libs/engine/index.js';
 import { estimateFigures } from '#libs/present/estimate-words.js';
-import { formatNumber, formatQuantity, GAP } from '#libs/present/format-number.js';
+import { formatNumber, formatQuantity } from '#libs/present/format-number.js';
+import { say } from '#libs/present/language.js';
 import { plainName } from '#libs/present/plain-name.js';
 import { estimateWords, proposedWords } from '#libs/present/proposed-words.js';
 import { singleLine } from '#libs/present/single-line.js';
-import { countDuties, NO_PERMISSION, VERDICT_WORDS } from '#libs/present/verdict-words.js';
+import { countDuties, noPermission, VERDICT_WORDS } from '#libs/present/verdict-words.js';
 import { setSingleLine } from './draw-single-line.js';
 import { HAIR, INK, PAPER, SOFT, STROKE } from './ink.js';
 import { drawVerdictMark } from './marks.js';
@@ -32,7 +33,7 @@ const SENTENCE_SHARE = 0.43;
 /** Title and decision box: what is proposed, how it was judged, what it does not cover, and the single-line diagram. */
 export function drawDecision(paper: Paper, outcome: Outcome | EstimateOutcome, logo: Logo | null): void {
   const { site } = outcome;
-  const title = [`Power-factor correction for ${plainName(site.name)}`];
+  const title = [say`Power-factor correction for ${plainName(site.name)}`];
   const room = logo === null ? null : drawLogo(paper, logo, plainName(site.name));
   const width = paper.width - (room === null ? 0 : room.width + 16);
   const style = TITLES.find((one) => paper.type.wrap(title, one, width).length <= 3) ?? TITLES.at(-1)!;
@@ -48,17 +49,17 @@ function drawLogo(paper: Paper, logo: Logo, site: string): { width: number; foot
   const [width, height] = [logo.width * scale, logo.height * scale];
   const [x, y] = [paper.right - width, paper.y + 2];
   const draw = () => void paper.doc.image(logo.bytes, x, y, { width, height });
-  paper.tagged('Figure', draw, { alt: `Logo of ${site}`, bbox: [x, y, x + width, y + height] });
+  paper.tagged('Figure', draw, { alt: say`Logo of ${site}`, bbox: [x, y, x + width, y + height] });
   return { width, foot: y + height };
 }
 
 function boardWords({ site }: BankOutcome): string {
   const { transformers } = site.supply;
-  const board = `${formatQuantity(site.nominalV, 'V', 'given')} main board, ${formatNumber(site.frequencyHz, 'given')}${GAP}Hz`;
+  const board = say`${formatQuantity(site.nominalV, 'V', 'given')} main board, ${formatNumber(site.frequencyHz, 'given')}\u00a0Hz`;
   const ratings = transformers.map(({ ratedKva }) => formatQuantity(ratedKva, 'kVA', 'given')).join(', ');
-  if (transformers.length === 0) return `${board}, no transformer given.`;
-  const meter = site.meteredAt === 'primary' ? 'metered on the primary' : 'metered at the board';
-  return `${board}, ${transformers.length === 1 ? 'one transformer' : `${transformers.length} transformers in parallel`} of ${ratings}, ${meter}.`;
+  if (transformers.length === 0) return say`${board}, no transformer given.`;
+  const meter = site.meteredAt === 'primary' ? say`metered on the primary` : say`metered at the board`;
+  return say`${board}, ${transformers.length === 1 ? say`one transformer` : say`${transformers.length} transformers in parallel`} of ${ratings}, ${meter}.`;
 }
 
 interface Paragraph {
@@ -78,43 +79,43 @@ function sentences(paper: Paper, outcome: Outcome | EstimateOutcome, width: numb
   });
   const judged =
     result.duties.length === 0
-      ? 'Nothing is connected, so no row was judged.'
-      : `${count.judged} rows judged: ${count.clear} within limits, ${count.watch} near a limit, ${count.avoid} over a limit. ` +
-        `${count.notJudged} not judged.`;
+      ? say`Nothing is connected, so no row was judged.`
+      : say`${count.judged} rows judged: ${count.clear} within limits, ${count.watch} near a limit, ${count.avoid} over a limit.
+        ${count.notJudged} not judged.`;
   return [
     set(
-      isEstimate(outcome) ? `Proposed, ${estimateWords(outcome)}` : `Proposed: ${proposedWords(outcome)}`,
+      isEstimate(outcome) ? say`Proposed, ${estimateWords(outcome)}` : say`Proposed: ${proposedWords(outcome)}`,
       HEADLINE,
       5,
     ),
     set(verdictSentence(outcome), STRONG, 6, 18),
     set(judged, BODY, 5),
-    set(`Does not cover: ${notCovered(outcome)}.`, BODY, 5),
-    set(NO_PERMISSION, BODY, 0),
+    set(say`Does not cover: ${notCovered(outcome)}.`, BODY, 5),
+    set(noPermission(), BODY, 0),
   ];
 }
 
 function verdictSentence({ result, site }: BankOutcome): string {
-  const corners = cornerSet(site.supply, site.loads, site.nominalV).corners.length;
+  const corners = siteCorners(site.supply, site.loads, site).corners.length;
   const levels = result.bank.levelsKvar.length;
   const words = VERDICT_WORDS[result.verdict];
   if (result.bank.stages.length === 0) return words;
   return result.verdict === 'clear'
-    ? `${words} at all ${levels} levels and in all ${corners} corners computed`
-    : `${words}; ${levels} levels and ${corners} corners computed`;
+    ? say`${words} at all ${levels} levels and in all ${corners} corners computed`
+    : say`${words}; ${levels} levels and ${corners} corners computed`;
 }
 
 function notCovered({ result, site }: Outcome | EstimateOutcome): string {
   const parts = [
-    ...(result.record === null ? ['the load within a month', 'switchings'] : []),
-    ...(result.money === null ? ['costs and savings'] : []),
-    'a load of another kind',
-    'rating of breakers and cables beyond section 7',
+    ...(result.record === null ? [say`the load within a month`, say`switchings`] : []),
+    ...(result.money === null ? [say`costs and savings`] : []),
+    say`a load of another kind`,
+    say`rating of breakers and cables beyond section 7`,
   ];
   if (site.loads.distorting === null || site.loads.backgroundPct === null)
-    parts.unshift('distortion, since loads or background are unknown');
+    parts.unshift(say`distortion, since loads or background are unknown`);
   if (result.record !== null && result.record.missing > 0)
-    parts.push(`${formatNumber(result.record.missing, 'whole')} intervals missing from the record`);
+    parts.push(say`${formatNumber(result.record.missing, 'whole')} intervals missing from the record`);
   return parts.join('; ');
 }
 
@@ -127,21 +128,21 @@ function keyFigures({ result, site }: Outcome): [string, string][] {
   const full = network.levels.filter((level) => level.case === 'nominal').at(-1);
   const distortion = result.duties.find(({ name, verdict }) => name === 'voltage distortion' && verdict !== null);
   return [
-    ['needed, at most', formatQuantity(requirement.maxKvar, 'kvar')],
-    ['needed, 99 %', formatQuantity(requirement.p99Kvar, 'kvar')],
-    ['effective', formatQuantity(result.bank.effectiveKvar, 'kvar')],
-    ['target', formatNumber(site.targetPowerFactor, 'given')],
-    ['set point', formatNumber(result.control.setPointPowerFactor, 'given')],
-    ['lowest month before', lowest(factors(requirement.months))],
-    ['lowest month after', lowest(factors(operation.months))],
-    ['in target', formatQuantity(operation.shareInTargetPct, '%')],
+    [say`needed, at most`, formatQuantity(requirement.maxKvar, 'kvar')],
+    [say`needed, 99 %`, formatQuantity(requirement.p99Kvar, 'kvar')],
+    [say`effective`, formatQuantity(result.bank.effectiveKvar, 'kvar')],
+    [say`target`, formatNumber(site.targetPowerFactor, 'given')],
+    [say`set point`, formatNumber(result.control.setPointPowerFactor, 'given')],
+    [say`lowest month before`, lowest(factors(requirement.months))],
+    [say`lowest month after`, lowest(factors(operation.months))],
+    [say`in target`, formatQuantity(operation.shareInTargetPct, '%')],
     [
-      'resonance, all in',
-      full?.parallelOrderH == null || full.levelKvar === 0 ? '–' : `order${GAP}${formatNumber(full.parallelOrderH)}`,
+      say`resonance, all in`,
+      full?.parallelOrderH == null || full.levelKvar === 0 ? '–' : say`order\u00a0${formatNumber(full.parallelOrderH)}`,
     ],
-    ['voltage distortion', distortion === undefined ? '–' : formatQuantity(distortion.value, '%')],
-    ['its limit', distortion === undefined ? '–' : formatQuantity(distortion.limit, '%', 'given')],
-    ['switchings', formatNumber(operation.totalSwitchings, 'whole')],
+    [say`voltage distortion`, distortion === undefined ? '–' : formatQuantity(distortion.value, '%')],
+    [say`its limit`, distortion === undefined ? '–' : formatQuantity(distortion.limit, '%', 'given')],
+    [say`switchings`, formatNumber(operation.totalSwitchings, 'whole')],
   ];
 }
 
@@ -197,8 +198,8 @@ function bandWords(outcome: Outcome | EstimateOutcome): string | null {
   const over = outcome.result.verdict === 'avoid';
   const passed = `${VERDICT_WORDS.avoid[0]!.toUpperCase()}${VERDICT_WORDS.avoid.slice(1)}`;
   if (isEstimate(outcome))
-    return `${over ? `${passed}, and an estimate` : 'Estimate, no record'}: not to be built as it stands`;
-  return over ? `${passed}: not to be built as it stands` : null;
+    return say`${over ? say`${passed}, and an estimate` : say`Estimate, no record`}: not to be built as it stands`;
+  return over ? say`${passed}: not to be built as it stands` : null;
 }
 
 /** Across the box: black, with its mark reversed. */

@@ -1,5 +1,6 @@
 import type { EstimateOutcome, Outcome } from '#libs/engine/index.js';
-import { blocking, type Finding, findingCount, findingNumbers, findings } from '#libs/present/findings.js';
+import { blocking, type Finding, findingCount, findingNumbers, findings, levelWords } from '#libs/present/findings.js';
+import { say, words } from '#libs/present/language.js';
 import type { FindingLevel } from '#libs/present/message.js';
 import { rulesEvaluated, rulesWords } from '#libs/present/rules-evaluated.js';
 import { blankCell } from './blank-cell.js';
@@ -9,22 +10,22 @@ import { type Cell, type Column, drawTable } from './table.js';
 import { BODY, NEW_LINE, type Piece, type Style } from './typesetter.js';
 
 const STYLE: Style = { ...BODY, size: 9 };
-const COLUMNS: Column[] = [
+const COLUMNS: Column[] = words([
   { head: 'level', share: 0, fixed: 63 },
   { head: 'what, and its source', share: 58 },
   { head: 'value', share: 0, fixed: 58, align: 'right' },
   { head: 'limit', share: 0, fixed: 43, align: 'right' },
   { head: 'consequence', share: 42 },
   { head: 'accepted', share: 0, fixed: 37 },
-];
+]);
 
 /** What a reviewer has to know, gravest first; each finding to be accepted has a line to sign on. */
 export function drawFindings(paper: Paper, outcome: Outcome | EstimateOutcome): void {
   const list = findings(outcome);
-  paper.heading('2', `Findings: ${findingCount(list)}`, { keep: 120 });
+  paper.heading('2', say`Findings: ${findingCount(list)}`, { keep: 120 });
   const evaluated = rulesWords(rulesEvaluated(outcome.result));
   if (list.length === 0) {
-    paper.paragraph([`No rule was triggered. ${evaluated}`]);
+    paper.paragraph([say`No rule was triggered. ${evaluated}`]);
     return;
   }
   drawTable(
@@ -33,7 +34,7 @@ export function drawFindings(paper: Paper, outcome: Outcome | EstimateOutcome): 
     list.map((finding) => findingRow(paper, finding)),
     { style: STYLE, gutter: 10, after: 5 },
   );
-  const blocks = blocking(list).length > 0 ? ' While a finding blocks issue, this paper stays a draft.' : '';
+  const blocks = blocking(list).length > 0 ? say` While a finding blocks issue, this paper stays a draft.` : '';
   paper.paragraph([`${evaluated}${blocks}`], { style: NOTE });
 }
 
@@ -49,9 +50,9 @@ function findingRow(paper: Paper, finding: Finding): Cell[] {
 function levelCell(paper: Paper, level: FindingLevel): Cell {
   const blocks = level === 'blocks issue';
   const style: Style = { ...STYLE, size: 8.4, weight: 'semibold', ink: blocks ? PAPER : INK };
-  const width = paper.type.width([level], style);
+  const width = paper.type.width([levelWords(level)], style);
   return {
-    pieces: [{ text: level, size: style.size, weight: style.weight, ink: style.ink }],
+    pieces: [{ text: levelWords(level), size: style.size, weight: style.weight, ink: style.ink }],
     inset: 4,
     draw({ x, y, height }) {
       const box = [x, y + 0.2, width + 8, height - 0.6] as const;

@@ -1,4 +1,5 @@
 import type { EstimateOutcome, Outcome } from '#libs/engine/index.js';
+import { say, words } from '#libs/present/language.js';
 import { formatDate } from '#libs/present/local-stamp.js';
 import { plainName } from '#libs/present/plain-name.js';
 import { REVISION_HEADS, revisionCells, revisionNumbers } from '#libs/present/revision-numbers.js';
@@ -9,7 +10,10 @@ import { BODY, type Style } from './typesetter.js';
 
 const SMALL: Style = { ...BODY, size: 8.8 };
 
-const KINDS = { plan: 'a new bank', assess: 'the site’s bank' } as const;
+/** Widths of the columns under `REVISION_HEADS`. */
+const REVISION_SHARES = [14, 14, 14, 14, 17, 14, 14, 17] as const;
+
+const KINDS = words({ plan: 'a new bank', assess: 'the site’s bank' } as const);
 
 /** Every revision with who made it and why, and what each came to. */
 export function drawHistory(paper: Paper, outcome: Outcome | EstimateOutcome, frame: ProposalFrame): void {
@@ -25,27 +29,30 @@ export function drawHistory(paper: Paper, outcome: Outcome | EstimateOutcome, fr
   };
   const past = frame.history ?? [];
   const all = [...past, own];
-  const count = past.length === 0 ? 'the first' : `${all.length} revisions in numbers`;
-  paper.heading('20', `Revision history: ${count}`, { keep: 130 });
-  const numbers = [{ head: 'revision', share: 12 }, ...REVISION_HEADS.map((head) => ({ head, share: widthOf(head) }))];
+  const count = past.length === 0 ? say`the first` : say`${all.length} revisions in numbers`;
+  paper.heading('20', say`Revision history: ${count}`, { keep: 130 });
+  const numbers = [
+    { head: say`revision`, share: 12 },
+    ...REVISION_HEADS.map((head, at) => ({ head, share: REVISION_SHARES[at]! })),
+  ];
   drawTable(
     paper,
     numbers.map(({ head, share }, at) => ({
       head,
       share,
-      align: at === 0 || head === 'verdict' ? ('left' as const) : ('right' as const),
+      align: at === 0 || at === REVISION_HEADS.length ? ('left' as const) : ('right' as const),
     })),
     all.map((one): Cell[] => [String(one.revision), ...revisionCells(one.numbers)]),
     { style: SMALL, padding: 2.4 },
   );
   const who = [
-    { head: 'revision', share: 12 },
-    { head: 'date', share: 18 },
-    { head: 'of', share: 18 },
-    { head: 'prepared by', share: 26 },
-    { head: 'reason', share: 46 },
-    { head: 'engine', share: 10 },
-    { head: 'content', share: 32 },
+    { head: say`revision`, share: 12 },
+    { head: say`date`, share: 18 },
+    { head: say`of`, share: 18 },
+    { head: say`prepared by`, share: 26 },
+    { head: say`reason`, share: 46 },
+    { head: say`engine`, share: 10 },
+    { head: say`content`, share: 32 },
   ];
   drawTable(
     paper,
@@ -61,8 +68,4 @@ export function drawHistory(paper: Paper, outcome: Outcome | EstimateOutcome, fr
     ]),
     { style: SMALL, padding: 2.4 },
   );
-}
-
-function widthOf(head: (typeof REVISION_HEADS)[number]): number {
-  return head === 'verdict' || head === 'voltage distortion' ? 17 : 14;
 }

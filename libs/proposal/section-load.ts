@@ -1,6 +1,7 @@
 import type { Outcome } from '#libs/engine/index.js';
 import { durationCurve } from '#libs/present/duration-curve.js';
 import { formatNumber, formatQuantity } from '#libs/present/format-number.js';
+import { say } from '#libs/present/language.js';
 import { phasors } from '#libs/present/phasors.js';
 import { powerFactorByMonth } from '#libs/present/power-factor-by-month.js';
 import { worstDay } from '#libs/present/worst-day.js';
@@ -19,13 +20,13 @@ export function drawLoad(paper: Paper, outcome: Outcome): void {
   const target = formatNumber(requirement.targetPowerFactor, 'given');
   paper.heading(
     '8',
-    `Load before and after: in target ${formatQuantity(operation.shareInTargetPct, '%')} of the time`,
+    say`Load before and after: in target ${formatQuantity(operation.shareInTargetPct, '%')} of the time`,
     { keep: 240 },
   );
   paper.paragraph([
-    `The target is ${target}. With the bank ${formatQuantity(operation.laggingKvarh, 'kvarh')} lagging and ` +
-      `${formatQuantity(operation.leadingKvarh, 'kvarh')} leading are left at the meter. At the bus the residual lies between ` +
-      `${formatQuantity(operation.minResidualKvar, 'kvar')} and ${formatQuantity(operation.maxResidualKvar, 'kvar')}.`,
+    say`The target is ${target}. With the bank ${formatQuantity(operation.laggingKvarh, 'kvarh')} lagging and
+      ${formatQuantity(operation.leadingKvarh, 'kvarh')} leading are left at the meter. At the bus the residual lies between
+      ${formatQuantity(operation.minResidualKvar, 'kvar')} and ${formatQuantity(operation.maxResidualKvar, 'kvar')}.`,
   ]);
   drawFigureBeside(paper, { number: '8.1', chart: durationCurve(outcome) }, 0.58, 182);
   drawFigureBeside(paper, { number: '8.2', chart: powerFactorByMonth(outcome) }, 0.58, 172);
@@ -39,15 +40,17 @@ export function drawLoad(paper: Paper, outcome: Outcome): void {
 function drawWear(paper: Paper, outcome: Outcome): void {
   const { operation, bank } = outcome.result;
   if (bank.stages.length === 0) return;
-  paper.heading('8.5', `Switchings: ${formatNumber(operation.totalSwitchings, 'whole')} in the record`, { level: 3 });
+  paper.heading('8.5', say`Switchings: ${formatNumber(operation.totalSwitchings, 'whole')} in the record`, {
+    level: 3,
+  });
   const stages: Column[] = [
-    { head: 'stage', share: 1, align: 'right' },
+    { head: say`stage`, share: 1, align: 'right' },
     { head: 'kvar', share: 1, align: 'right' },
-    { head: 'switchings', share: 1.2, align: 'right' },
+    { head: say`switchings`, share: 1.2, align: 'right' },
   ];
   const hours: Column[] = [
-    { head: 'level kvar', share: 1, align: 'right' },
-    { head: 'hours', share: 1, align: 'right' },
+    { head: say`level kvar`, share: 1, align: 'right' },
+    { head: say`hours`, share: 1, align: 'right' },
   ];
   const [left, right] = halves(paper);
   const stageRows = operation.switchings
@@ -67,9 +70,9 @@ function drawWear(paper: Paper, outcome: Outcome): void {
   paper.y = Math.max(paper.y, end);
   const idle = operation.hoursAtLevel.length - used.length;
   const notes = [
-    ...(idle > 0 ? [`${idle} ${idle === 1 ? 'level is' : 'levels are'} never used.`] : []),
+    ...(idle > 0 ? [say`${idle} ${idle === 1 ? say`level is` : say`levels are`} never used.`] : []),
     ...(used.length > MOST_STAGES || operation.switchings.length > MOST_STAGES
-      ? [`The first ${MOST_STAGES} are listed; the result as JSON holds all.`]
+      ? [say`The first ${MOST_STAGES} are listed; the result as JSON holds all.`]
       : []),
   ];
   if (notes.length > 0) paper.paragraph([notes.join(' ')], { style: NOTE });

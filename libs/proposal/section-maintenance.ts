@@ -1,4 +1,5 @@
 import type { EstimateOutcome, Outcome } from '#libs/engine/index.js';
+import { say } from '#libs/present/language.js';
 import { maintenanceLines } from '#libs/present/maintenance-lines.js';
 import { NOTE, type Paper } from './paper.js';
 import { drawTable } from './table.js';
@@ -7,17 +8,17 @@ import { drawTable } from './table.js';
 export function drawMaintenance(paper: Paper, outcome: Outcome | EstimateOutcome): void {
   const lines = maintenanceLines(outcome);
   if (lines.length === 0) {
-    paper.heading('18', 'Maintenance: there is no bank');
-    paper.paragraph(['Nothing is connected, so nothing has to be looked after.']);
+    paper.heading('18', say`Maintenance: there is no bank`);
+    paper.paragraph([say`Nothing is connected, so nothing has to be looked after.`]);
     return;
   }
-  paper.heading('18', `Maintenance: ${lines.length} checks with their reject values`);
+  paper.heading('18', say`Maintenance: ${lines.length} checks with their reject values`);
   const columns = [
-    { head: 'check', share: 36 },
-    { head: 'every', share: 14, align: 'right' as const },
-    { head: 'expected', share: 17, align: 'right' as const },
-    { head: 'rejected', share: 36 },
-    { head: 'basis', share: 32 },
+    { head: say`check`, share: 36 },
+    { head: say`every`, share: 14, align: 'right' as const },
+    { head: say`expected`, share: 17, align: 'right' as const },
+    { head: say`rejected`, share: 36 },
+    { head: say`basis`, share: 32 },
   ];
   drawTable(
     paper,
@@ -27,8 +28,8 @@ export function drawMaintenance(paper: Paper, outcome: Outcome | EstimateOutcome
   );
   paper.paragraph(
     [
-      'All of them once more a week after the first switching on. Intervals are common practice; dust, heat and many switchings ' +
-        'call for shorter ones. A stage that is rejected comes out, and section 10 says what is left without it. Section 15 first.',
+      say`All of them once more a week after the first switching on. Intervals are common practice; dust, heat and many switchings
+        call for shorter ones. A stage that is rejected comes out, and section 10 says what is left without it. Section 15 first.`,
     ],
     { style: NOTE },
   );

@@ -1,4 +1,5 @@
 import type { BankOutcome } from '#libs/engine/index.js';
+import { say } from '#libs/present/language.js';
 import { scheduleOfMaterials } from '#libs/present/schedule-of-materials.js';
 import { NOTE, type Paper } from './paper.js';
 import { drawTable } from './table.js';
@@ -7,15 +8,15 @@ import { drawTable } from './table.js';
 export function drawMaterials(paper: Paper, outcome: BankOutcome): void {
   const lines = scheduleOfMaterials(outcome);
   if (lines.length === 0) {
-    paper.heading('19', 'Schedule of materials: nothing is built');
-    paper.paragraph(['Nothing is to be bought.']);
+    paper.heading('19', say`Schedule of materials: nothing is built`);
+    paper.paragraph([say`Nothing is to be bought.`]);
     return;
   }
-  paper.heading('19', `Schedule of materials: ${lines.length} items, by their ratings`);
+  paper.heading('19', say`Schedule of materials: ${lines.length} items, by their ratings`);
   const columns = [
-    { head: 'item', share: 36 },
-    { head: 'number', share: 12, align: 'right' as const },
-    { head: 'rating', share: 72 },
+    { head: say`item`, share: 36 },
+    { head: say`number`, share: 12, align: 'right' as const },
+    { head: say`rating`, share: 72 },
   ];
   drawTable(
     paper,
@@ -25,7 +26,7 @@ export function drawMaterials(paper: Paper, outcome: BankOutcome): void {
   );
   paper.paragraph(
     [
-      'Least ratings by this plan; section 7.2 names their sources. What is offered otherwise is entered and judged again.',
+      say`Least ratings by this plan; section 7.2 names their sources. What is offered otherwise is entered and judged again.`,
     ],
     { style: NOTE },
   );

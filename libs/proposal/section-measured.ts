@@ -1,4 +1,5 @@
 import type { BankOutcome } from '#libs/engine/index.js';
+import { say } from '#libs/present/language.js';
 import { MEASURED_HEADS, measuredFinding, measuredNote, measuredRows } from '#libs/present/measured-rows.js';
 import { plainName } from '#libs/present/plain-name.js';
 import { NOTE, type Paper } from './paper.js';
@@ -15,7 +16,7 @@ const COLUMNS = MEASURED_HEADS.map(
 export function drawMeasured(paper: Paper, outcome: BankOutcome): void {
   const { measured } = outcome.result;
   if (measured === null || measured.rows.length === 0) return;
-  paper.heading('9.7', `Measured at ${plainName(measured.bus)}: ${measuredFinding(measured)}`, { level: 3 });
+  paper.heading('9.7', say`Measured at ${plainName(measured.bus)}: ${measuredFinding(measured)}`, { level: 3 });
   drawTable(paper, COLUMNS, measuredRows(measured), { after: 4 });
   paper.paragraph([measuredNote(measured)], { style: NOTE });
 }

@@ -2,14 +2,16 @@ import type { Bill, EstimateOutcome, MoneyPapers, Outcome } from '#libs/engine/i
 import { isEstimate } from '#libs/engine/index.js';
 import { billsByMonth } from '#libs/present/bills-by-month.js';
 import { cashFlowFigure, isPriced, type PricedMoney } from '#libs/present/cash-flow-figure.js';
-import { formatFixed, formatNumber, formatQuantity, GAP } from '#libs/present/format-number.js';
+import { lowered } from '#libs/present/first-letter.js';
+import { formatFixed, formatNumber, formatQuantity } from '#libs/present/format-number.js';
+import { say } from '#libs/present/language.js';
 import {
   billDecimals,
   clauseSums,
   financeWords,
   formatMoney,
   formatPayback,
-  NO_GUARANTEE,
+  noGuarantee,
   namedPicks,
   paybackWords,
   priceBookWords,
@@ -32,13 +34,13 @@ const TIGHT = { style: SMALL, padding: 1.6, after: 6 };
 export function drawMoney(paper: Paper, outcome: Outcome | EstimateOutcome): void {
   const { papers } = outcome.site;
   if (outcome.result.money === null) {
-    paper.heading('11', 'Money: not reckoned');
+    paper.heading('11', say`Money: not reckoned`);
     paper.paragraph([unpricedWords(outcome)]);
     return;
   }
   if (isEstimate(outcome)) {
-    paper.heading('11', `Money: bills by the estimate, ${NO_GUARANTEE}`, { keep: 240 });
-    paper.paragraph([`${tariffWords(papers)} The bills rest on the estimate, so no saving is given.`]);
+    paper.heading('11', say`Money: bills by the estimate, ${noGuarantee()}`, { keep: 240 });
+    paper.paragraph([say`${tariffWords(papers)} The bills rest on the estimate, so no saving is given.`]);
     drawBills(paper, outcome.result.money.bills, papers);
     return;
   }
@@ -46,28 +48,28 @@ export function drawMoney(paper: Paper, outcome: Outcome | EstimateOutcome): voi
 }
 
 function unpricedWords({ site: { papers }, kind }: Outcome | EstimateOutcome): string {
-  const given = kind === 'plan' ? 'designed' : 'judged';
-  if (papers.tariff !== null) return 'The tariff could not be used here; the findings say why.';
-  const prices = papers.prices === null ? 'No tariff and no prices were given' : 'No tariff was given';
-  return `${prices}, so neither bills nor costs are reckoned: the bank was ${given} by limits and target alone.`;
+  const given = kind === 'plan' ? say`designed` : say`judged`;
+  if (papers.tariff !== null) return say`The tariff could not be used here; the findings say why.`;
+  const prices = papers.prices === null ? say`No tariff and no prices were given` : say`No tariff was given`;
+  return say`${prices}, so neither bills nor costs are reckoned: the bank was ${given} by limits and target alone.`;
 }
 
 function drawPriced(paper: Paper, outcome: Outcome): void {
   const { papers } = outcome.site;
   const money = outcome.result.money!;
   const saving = formatMoney(headlineSaving(money), papers.currency);
-  paper.heading('11', `Money: ${saving} a year saved, ${NO_GUARANTEE}`, { keep: 280 });
+  paper.heading('11', say`Money: ${saving} a year saved, ${noGuarantee()}`, { keep: 280 });
   paper.paragraph([
     `${tariffWords(papers)} ${priceBookWords(papers)} ${isPriced(money) ? financeWords(papers) : ''}`.trim(),
   ]);
   if (outcome.result.verdict === 'avoid') {
-    paper.paragraph(['The bank is over a limit. Its money is shown for comparison and is no offer.'], {
+    paper.paragraph([say`The bank is over a limit. Its money is shown for comparison and is no offer.`], {
       style: STRONG,
     });
   }
   if (money.monthsFilled > 0) {
     const count = formatNumber(money.monthsFilled, 'whole');
-    paper.paragraph([`The record lacks ${count} of the twelve months; they are taken as the mean of the others.`]);
+    paper.paragraph([say`The record lacks ${count} of the twelve months; they are taken as the mean of the others.`]);
   }
   if (isPriced(money)) drawWorth(paper, money, papers);
   drawBills(paper, money.bills, papers);
@@ -80,20 +82,25 @@ function drawWorth(paper: Paper, money: PricedMoney, papers: MoneyPapers): void 
   const { currency, finance } = papers;
   const discounted = money.discountedPaybackYears;
   const rows = [
-    ['capital', formatMoney(money.capital.total, currency), 'net present value', formatMoney(money.npv, currency)],
     [
-      'saving a year',
+      say`capital`,
+      formatMoney(money.capital.total, currency),
+      say`net present value`,
+      formatMoney(money.npv, currency),
+    ],
+    [
+      say`saving a year`,
       formatMoney(headlineSaving(money), currency),
-      'the same as a yearly amount',
+      say`the same as a yearly amount`,
       formatMoney(money.annuityPerYear, currency),
     ],
-    ['payback', paybackWords(money, finance.horizonYears), 'internal rate of return', returnWords(money)],
-    ['payback, discounted', discounted === null ? '–' : formatPayback(discounted), '', ''],
+    [say`payback`, paybackWords(money, finance.horizonYears), say`internal rate of return`, returnWords(money)],
+    [say`payback, discounted`, discounted === null ? '–' : formatPayback(discounted), '', ''],
   ];
   const columns: Column[] = [
-    { head: 'what it costs and saves', share: 20 },
+    { head: say`what it costs and saves`, share: 20 },
     { head: '', share: 24, align: 'right' },
-    { head: 'what that is worth', share: 24 },
+    { head: say`what that is worth`, share: 24 },
     { head: '', share: 26, align: 'right' },
   ];
   drawTable(paper, columns, rows, { padding: 2.2, gutter: 18 });
@@ -104,9 +111,9 @@ function drawWorth(paper: Paper, money: PricedMoney, papers: MoneyPapers): void 
 function drawSavingCases(paper: Paper, { savingRange }: PricedMoney, currency: string): void {
   if (savingRange === null) return;
   const columns: Column[] = [
-    { head: 'the saving a year', share: 44 },
+    { head: say`the saving a year`, share: 44 },
     { head: currency, share: 20, align: 'right' },
-    { head: 'net present value', share: 20, align: 'right' },
+    { head: say`net present value`, share: 20, align: 'right' },
   ];
   const rows = savingRange.cases.map(({ name, savingPerYear, npv }) => [
     SAVING_CASE_WORDS[name],
@@ -120,10 +127,10 @@ function drawBills(paper: Paper, bills: { before: Bill; after: Bill }, papers: M
   if (bills.before.months.length === 0) return;
   drawFigureBeside(paper, { number: '11.1', chart: billsByMonth(bills, papers) }, 0.5, 180);
   const sums = clauseSums(bills);
-  paper.heading('11.2', 'Where the bills change, clause by clause over the record', { level: 3, keep: 60 });
+  paper.heading('11.2', say`Where the bills change, clause by clause over the record`, { level: 3, keep: 60 });
   const columns: Column[] = [
-    { head: papers.currency === '' ? 'clause' : `clause, ${papers.currency}`, share: 40 },
-    ...['before', 'after', 'saved'].map((head): Column => ({ head, share: 18, align: 'right' })),
+    { head: papers.currency === '' ? say`clause` : say`clause, ${papers.currency}`, share: 40 },
+    ...[say`before`, say`after`, say`saved`].map((head): Column => ({ head, share: 18, align: 'right' })),
   ];
   const amount = (value: number) => formatFixed(value, billDecimals(papers));
   const row = (name: string, before: number, after: number) => [
@@ -137,7 +144,7 @@ function drawBills(paper: Paper, bills: { before: Bill; after: Bill }, papers: M
     columns,
     [
       ...sums.map(({ clause, before, after }) => row(plainName(clause), before, after)),
-      row('together', bills.before.total, bills.after.total),
+      row(say`together`, bills.before.total, bills.after.total),
     ],
     TIGHT,
   );
@@ -152,14 +159,14 @@ function drawBilled(paper: Paper, before: Bill, papers: MoneyPapers): void {
     Math.abs(month.difference!) > Math.abs(worst.difference!) ? month : worst,
   );
   const difference = formatMoney(most.difference, papers.currency, billDecimals(papers));
-  const count = known.length === 1 ? 'One real bill was given' : `${known.length} real bills were given`;
-  paper.paragraph([`${count}; the reckoned ones differ from them by at most ${difference}.`]);
+  const count = known.length === 1 ? say`One real bill was given` : say`${known.length} real bills were given`;
+  paper.paragraph([say`${count}; the reckoned ones differ from them by at most ${difference}.`]);
 }
 
 function drawCosts(paper: Paper, money: PricedMoney, papers: MoneyPapers): void {
   const { capital, running } = money;
-  const unit = papers.currency === '' ? 'amount' : papers.currency;
-  const title = `What the bank costs: ${formatMoney(capital.total, papers.currency)} to build`;
+  const unit = papers.currency === '' ? say`amount` : papers.currency;
+  const title = say`What the bank costs: ${formatMoney(capital.total, papers.currency)} to build`;
   paper.heading('11.3', title, { level: 3, keep: 160 });
   const [left, right] = halves(paper);
   const columns = (head: string): Column[] => [
@@ -168,20 +175,20 @@ function drawCosts(paper: Paper, money: PricedMoney, papers: MoneyPapers): void 
   ];
   const top = paper.y;
   const items = capital.lines.map(({ item, amount }) => [item, formatFixed(amount, 0)]);
-  drawTable(paper, columns('capital'), [...items, ['capital, together', formatFixed(capital.total, 0)]], {
+  drawTable(paper, columns(say`capital`), [...items, [say`capital, together`, formatFixed(capital.total, 0)]], {
     ...TIGHT,
     ...left,
   });
   const end = paper.y;
   paper.y = top;
   const rows = [
-    ['maintenance a year', formatFixed(running.maintenancePerYear, 0)],
-    [`losses a year, ${formatQuantity(running.lossKwhPerYear, 'kWh')}`, formatFixed(running.lossPerYear, 0)],
+    [say`maintenance a year`, formatFixed(running.maintenancePerYear, 0)],
+    [say`losses a year, ${formatQuantity(running.lossKwhPerYear, 'kWh')}`, formatFixed(running.lossPerYear, 0)],
     ...replacementRows(money),
   ];
-  drawTable(paper, columns('running'), rows, { ...TIGHT, ...right });
+  drawTable(paper, columns(say`running`), rows, { ...TIGHT, ...right });
   const switchings = formatNumber(running.switchingsPerYear, 'whole');
-  paper.paragraph([`${switchings} switchings a year. Replacements are before any growth of costs.`], {
+  paper.paragraph([say`${switchings} switchings a year. Replacements are before any growth of costs.`], {
     style: NOTE,
     ...right,
   });
@@ -196,8 +203,8 @@ function replacementRows({ running }: PricedMoney): string[][] {
     const year = Math.ceil(month / 12);
     byYear.set(year, (byYear.get(year) ?? 0) + amount);
   }
-  if (byYear.size === 0) return [['replacements within these years', '0']];
-  return [...byYear].map(([year, amount]) => [`replacements in year${GAP}${year}`, formatFixed(amount, 0)]);
+  if (byYear.size === 0) return [[say`replacements within these years`, '0']];
+  return [...byYear].map(([year, amount]) => [say`replacements in year\u00a0${year}`, formatFixed(amount, 0)]);
 }
 
 function drawPicks(paper: Paper, outcome: Outcome): void {
@@ -205,24 +212,24 @@ function drawPicks(paper: Paper, outcome: Outcome): void {
   const money = outcome.result.money!;
   const picks = namedPicks(money, papers);
   if (picks.length === 0) {
-    paper.paragraph(['Nothing else was weighed: the bank that was given is priced as new.'], { style: NOTE });
+    paper.paragraph([say`Nothing else was weighed: the bank that was given is priced as new.`], { style: NOTE });
     return;
   }
   const taken = picks.find(({ isRecommended }) => isRecommended)!;
-  paper.heading('11.5', `The ways that were weighed: ${taken.name.toLowerCase()}`, { level: 3, keep: 120 });
+  paper.heading('11.5', say`The ways that were weighed: ${lowered(taken.name)}`, { level: 3, keep: 120 });
   const columns: Column[] = [
-    { head: 'way', share: 22 },
-    { head: 'capital', share: 12, align: 'right' },
-    { head: 'net present value', share: 14, align: 'right' },
-    { head: 'target', share: 9 },
-    { head: 'verdict', share: 17 },
-    { head: 'why', share: 42 },
+    { head: say`way`, share: 22 },
+    { head: say`capital`, share: 12, align: 'right' },
+    { head: say`net present value`, share: 14, align: 'right' },
+    { head: say`target`, share: 9 },
+    { head: say`verdict`, share: 17 },
+    { head: say`why`, share: 42 },
   ];
   const rows = picks.map(({ name, way, isRecommended, reason }) => [
-    isRecommended ? [{ text: `${name}, recommended`, weight: 'semibold' as const }] : name,
+    isRecommended ? [{ text: say`${name}, recommended`, weight: 'semibold' as const }] : name,
     way === null ? '–' : formatFixed(way.capital, 0),
     way === null ? '–' : formatFixed(way.npv, 0),
-    way === null ? '–' : way.targetMet ? 'held' : 'missed',
+    way === null ? '–' : way.targetMet ? say`held` : say`missed`,
     way === null ? '–' : VERDICT_WORDS[way.verdict],
     reason,
   ]);

@@ -1,9 +1,13 @@
 import type { BankOutcome, NetworkLevel } from '#libs/engine/index.js';
+import { standingWords } from '#libs/present/duty-bars.js';
+import { engineName } from '#libs/present/engine-name.js';
 import { dutyName } from '#libs/present/figure-words.js';
 import { countWord } from '#libs/present/findings.js';
 import { formatApart, formatNumber, formatQuantity, GAP } from '#libs/present/format-number.js';
 import { impedanceOverOrder } from '#libs/present/impedance-over-order.js';
+import { say, words } from '#libs/present/language.js';
 import { marginMap } from '#libs/present/margin-map.js';
+import { plainName } from '#libs/present/plain-name.js';
 import { bankName } from '#libs/present/proposed-words.js';
 import { countDuties, type DutyCount, verdictWords } from '#libs/present/verdict-words.js';
 import { CELL_HEIGHT, cellsHeight, drawCellKey, drawCells } from './draw-cells.js';
@@ -32,13 +36,13 @@ const MAP_ROWS = 24;
 export function drawNetwork(paper: Paper, outcome: BankOutcome): void {
   const { result } = outcome;
   if (result.bank.stages.length === 0) {
-    paper.heading('9', 'Network and duties: nothing is connected');
-    paper.paragraph(['Without a bank there is no level to judge; the network stays as it is.']);
+    paper.heading('9', say`Network and duties: nothing is connected`);
+    paper.paragraph([say`Without a bank there is no level to judge; the network stays as it is.`]);
     drawImpedance(paper, outcome);
     return;
   }
   const words = dutyWords(countDuties(result.duties));
-  paper.heading('9', `Network and duties: ${words}`, { keep: 220 });
+  paper.heading('9', say`Network and duties: ${words}`, { keep: 220 });
   paper.paragraph([networkSentence(outcome)]);
   drawImpedance(paper, outcome);
   drawMargins(paper, outcome);
@@ -47,9 +51,9 @@ export function drawNetwork(paper: Paper, outcome: BankOutcome): void {
 }
 
 function dutyWords({ avoid, watch }: DutyCount): string {
-  const rows = (count: number) => `${countWord(count)} ${count === 1 ? 'row' : 'rows'}`;
-  if (avoid > 0) return `${rows(avoid)} over a limit`;
-  return watch > 0 ? `${rows(watch)} near a limit` : 'every row judged is within its limit';
+  const rows = (count: number) => `${countWord(count)} ${count === 1 ? say`row` : say`rows`}`;
+  if (avoid > 0) return say`${rows(avoid)} over a limit`;
+  return watch > 0 ? say`${rows(watch)} near a limit` : say`every row judged is within its limit`;
 }
 
 function networkSentence({ result }: BankOutcome): string {
@@ -58,16 +62,16 @@ function networkSentence({ result }: BankOutcome): string {
   const peaks = levels
     .filter(({ levelKvar }) => levelKvar > 0)
     .flatMap(({ parallelOrderH }) => (parallelOrderH === null ? [] : [parallelOrderH]));
-  const fault = `The fault level at the bus lies between ${formatQuantity(shortCircuitMinMva, 'MVA')} and ${formatQuantity(shortCircuitMva, 'MVA')}.`;
-  const orders = present.length === 0 ? 'No order is present.' : `Orders present: ${present.join(', ')}.`;
-  if (peaks.length === 0) return `${fault} ${orders} No level makes a peak.`;
-  const range = `${formatNumber(Math.min(...peaks))} and ${formatNumber(Math.max(...peaks))}`;
-  return `${fault} ${orders} Over all levels, nominal and worst case, the parallel resonance lies between order ${range}.`;
+  const fault = say`The fault level at the bus lies between ${formatQuantity(shortCircuitMinMva, 'MVA')} and ${formatQuantity(shortCircuitMva, 'MVA')}.`;
+  const orders = present.length === 0 ? say`No order is present.` : say`Orders present: ${present.join(', ')}.`;
+  if (peaks.length === 0) return say`${fault} ${orders} No level makes a peak.`;
+  const range = say`${formatNumber(Math.min(...peaks))} and ${formatNumber(Math.max(...peaks))}`;
+  return say`${fault} ${orders} Over all levels, nominal and worst case, the parallel resonance lies between order ${range}.`;
 }
 
 function drawImpedance(paper: Paper, outcome: BankOutcome): void {
   const { bank, rival } = outcome;
-  const own = impedanceOverOrder(outcome, bank, bank.groups.length === 0 ? 'No bank' : bankName(bank.groups));
+  const own = impedanceOverOrder(outcome, bank, bank.groups.length === 0 ? say`No bank` : bankName(bank.groups));
   const [left, right] = halves(paper);
   if (rival === null) {
     const figure = { number: '9.1', chart: own.chart() };
@@ -86,16 +90,16 @@ function drawImpedance(paper: Paper, outcome: BankOutcome): void {
   }
   const key =
     bank.groups.length === 0
-      ? 'Dashed: without a bank.'
-      : 'Grey: all levels. Heavy line: all stages in. Dashed: no bank. Heavy strokes below: orders present, with windows of ±0.3. ' +
-        'Strokes above: each level’s peak, heavy inside a window.';
+      ? say`Dashed: without a bank.`
+      : say`Grey: all levels. Heavy line: all stages in. Dashed: no bank. Heavy strokes below: orders present, with windows of ±0.3.
+        Strokes above: each level’s peak, heavy inside a window.`;
   paper.paragraph([key], { style: NOTE });
 }
 
 function drawMargins(paper: Paper, outcome: BankOutcome): void {
   const { bank, margins, rival } = outcome;
   if (margins.ordersH.length === 0) {
-    paper.paragraph(['No order with a limit is present, so there is no map of margins.'], { style: NOTE });
+    paper.paragraph([say`No order with a limit is present, so there is no map of margins.`], { style: NOTE });
     return;
   }
   const maps: Numbered[] = [{ number: '9.3', chart: marginMap(margins, bankName(bank.groups), MOST_LEVELS) }];
@@ -110,7 +114,7 @@ function drawMargins(paper: Paper, outcome: BankOutcome): void {
   if (rival === null) return;
   const other = bankName(rival.bank.groups);
   paper.paragraph([
-    `${other}, for comparison: ${verdictWords(rival.verdict)}; harmonic voltage over a limit at ${rival.levelsOver} of ${rival.levelsAll} levels.`,
+    say`${other}, for comparison: ${verdictWords(rival.verdict)}; harmonic voltage over a limit at ${rival.levelsOver} of ${rival.levelsAll} levels.`,
   ]);
 }
 
@@ -136,7 +140,7 @@ function drawMaps(paper: Paper, maps: readonly Numbered[], spans: readonly Span[
   }
 }
 
-const DUTY_COLUMNS: Column[] = [
+const DUTY_COLUMNS: Column[] = words([
   { head: 'duty', share: 43 },
   { head: 'value', share: 14, align: 'right' },
   { head: 'limit', share: 14, align: 'right' },
@@ -144,11 +148,11 @@ const DUTY_COLUMNS: Column[] = [
   { head: 'met at', share: 16, align: 'right' },
   { head: 'source', share: 28 },
   { head: 'verdict', share: 22 },
-];
+]);
 
 function drawDuties(paper: Paper, outcome: BankOutcome): void {
   const { duties } = outcome.result;
-  paper.heading('9.5', 'Duties, worst level and corner', { level: 3 });
+  paper.heading('9.5', say`Duties, worst level and corner`, { level: 3 });
   const rows = duties.map((duty): Cell[] => {
     const apart = duty.limit === null ? null : formatApart(duty.value, duty.limit);
     return [
@@ -157,7 +161,7 @@ function drawDuties(paper: Paper, outcome: BankOutcome): void {
       apart === null ? '–' : `${apart.limit}${GAP}${duty.unit}`,
       duty.ratio === null ? '–' : `${formatApart(100 * duty.ratio, 100).value}${GAP}%`,
       formatQuantity(duty.levelKvar, 'kvar'),
-      duty.source,
+      engineName(duty.source),
       {
         pieces: [verdictWords(duty.verdict)],
         inset: 13,
@@ -169,7 +173,7 @@ function drawDuties(paper: Paper, outcome: BankOutcome): void {
   drawTable(paper, DUTY_COLUMNS, rows, { style: { ...BODY, size: 8.8 }, padding: 2.4 });
 }
 
-const LEVEL_COLUMNS: Column[] = [
+const LEVEL_COLUMNS: Column[] = words([
   { head: 'level, kvar', share: 14, align: 'right' },
   { head: 'case', share: 11 },
   { head: 'peak at order', share: 17, align: 'right' },
@@ -177,12 +181,13 @@ const LEVEL_COLUMNS: Column[] = [
   { head: 'THD of voltage, %', share: 22, align: 'right' },
   { head: 'TDD of current, %', share: 22, align: 'right' },
   { head: 'fault level, C, L, damping', share: 43 },
-];
+]);
 
 function drawLevels(paper: Paper, outcome: BankOutcome): void {
   const { levels } = outcome.result.network;
   const shown = levels.length > 2 * MOST_LEVELS ? spread(levels) : levels;
-  paper.heading('9.6', 'Levels, nominal and worst case', { level: 3 });
+  const severalBuses = levels.some(({ bus }) => bus !== levels[0]!.bus);
+  paper.heading('9.6', say`Levels, nominal and worst case`, { level: 3 });
   const rows = shown.map((level) => [
     formatNumber(level.levelKvar),
     level.case,
@@ -190,12 +195,12 @@ function drawLevels(paper: Paper, outcome: BankOutcome): void {
     formatQuantity(level.peakOhm, ''),
     formatNumber(level.voltageDistortionPct),
     formatNumber(level.currentDistortionPct),
-    cornerWords(level),
+    severalBuses ? `${plainName(level.bus)}: ${cornerWords(level)}` : cornerWords(level),
   ]);
   drawTable(paper, LEVEL_COLUMNS, rows, { style: SMALL, padding: 1.5 });
   if (shown.length < levels.length) {
     paper.paragraph(
-      [`${shown.length / 2} of ${levels.length / 2} levels are listed, evenly; the result as JSON holds all.`],
+      [say`${shown.length / 2} of ${levels.length / 2} levels are listed, evenly; the result as JSON holds all.`],
       { style: NOTE },
     );
   }
@@ -212,5 +217,6 @@ function spread(levels: readonly NetworkLevel[]): NetworkLevel[] {
 
 function cornerWords({ corner }: NetworkLevel): string {
   const given = (value: number) => formatNumber(value, 'given');
-  return `${given(corner.faultLevelMva)}${GAP}MVA, × ${given(corner.capacitanceFactor)}, × ${given(corner.inductanceFactor)}, ${formatQuantity(corner.dampingKw, 'kW')}`;
+  const own = `${given(corner.faultLevelMva)}${GAP}MVA, × ${given(corner.capacitanceFactor)}, × ${given(corner.inductanceFactor)}, ${formatQuantity(corner.dampingKw, 'kW')}`;
+  return [own, ...standingWords(corner)].join(', ');
 }

@@ -1,4 +1,5 @@
 import type { EstimateOutcome, Outcome } from '#libs/engine/index.js';
+import { say } from '#libs/present/language.js';
 import { operatorPage } from '#libs/present/operator-page.js';
 import { blankCell } from './blank-cell.js';
 import { NOTE, type Paper } from './paper.js';
@@ -8,22 +9,22 @@ import { type Cell, drawTable } from './table.js';
 export function drawOperatorPage(paper: Paper, outcome: Outcome | EstimateOutcome): void {
   const { facts, effects, questions } = operatorPage(outcome);
   paper.turnUnlessFresh();
-  paper.heading('17', `For the network operator: ${questions.length} questions before the bank is connected`);
+  paper.heading('17', say`For the network operator: ${questions.length} questions before the bank is connected`);
   drawTable(
     paper,
     [
-      { head: 'connection and bank', share: 34 },
+      { head: say`connection and bank`, share: 34 },
       { head: '', share: 66 },
     ],
     facts,
   );
   if (effects.length > 0) {
     const columns = [
-      { head: 'effect on the network, worst level and corner', share: 44 },
-      { head: 'value', share: 16, align: 'right' as const },
-      { head: 'limit', share: 14, align: 'right' as const },
-      { head: 'source', share: 28 },
-      { head: 'verdict', share: 20 },
+      { head: say`effect on the network, worst level and corner`, share: 44 },
+      { head: say`value`, share: 16, align: 'right' as const },
+      { head: say`limit`, share: 14, align: 'right' as const },
+      { head: say`source`, share: 28 },
+      { head: say`verdict`, share: 20 },
     ];
     drawTable(
       paper,
@@ -34,12 +35,12 @@ export function drawOperatorPage(paper: Paper, outcome: Outcome | EstimateOutcom
   drawTable(
     paper,
     [
-      { head: 'asked', share: 46 },
-      { head: 'taken for this plan', share: 30 },
-      { head: 'answer', share: 30 },
+      { head: say`asked`, share: 46 },
+      { head: say`taken for this plan`, share: 30 },
+      { head: say`answer`, share: 30 },
     ],
     questions.map(({ question, taken }): Cell[] => [question, taken, blankCell(paper)]),
     { after: 5 },
   );
-  paper.paragraph(['An answer that differs from what was taken calls for another revision.'], { style: NOTE });
+  paper.paragraph([say`An answer that differs from what was taken calls for another revision.`], { style: NOTE });
 }

@@ -1,4 +1,5 @@
 import type { BankOutcome, Reevaluation } from '#libs/engine/index.js';
+import { say } from '#libs/present/language.js';
 import {
   CHANGE_HEADS,
   changeRows,
@@ -28,7 +29,7 @@ const LIKE_SHARES = [54, 23, 23];
 export function drawReevaluation(paper: Paper, { site }: BankOutcome, reevaluation: Reevaluation | undefined): void {
   if (reevaluation === undefined) return;
   const currency = site.currency ?? '';
-  paper.heading('A', `Judged again: ${reevaluationFinding(reevaluation)}`, { level: 3, keep: 90 });
+  paper.heading('A', say`Judged again: ${reevaluationFinding(reevaluation)}`, { level: 3, keep: 90 });
   const tonight = tonightSentences(reevaluation);
   tonight.forEach((sentence, k) => {
     paper.paragraph([k === 0 ? { text: sentence, weight: 'semibold' } : sentence]);
@@ -40,10 +41,10 @@ export function drawReevaluation(paper: Paper, { site }: BankOutcome, reevaluati
   drawPart(paper, LIKE_HEADS, LIKE_SHARES, likeRows(reevaluation));
   paper.paragraph(
     [
-      'Before and after are judged by the same engine, the bank as it measures. A way to mend it is weighed by itself, with ' +
-        'the lowest set point that meets the target; parts are capacitors, stages, reactors and switches by the price book, ' +
-        'and more cabinets where a larger bank needs them: no offer. The day of a change leaves the least sum of squares, ' +
-        'each weekday with a mean of its own.',
+      say`Before and after are judged by the same engine, the bank as it measures. A way to mend it is weighed by itself, with
+        the lowest set point that meets the target; parts are capacitors, stages, reactors and switches by the price book,
+        and more cabinets where a larger bank needs them: no offer. The day of a change leaves the least sum of squares,
+        each weekday with a mean of its own.`,
     ],
     { style: NOTE },
   );

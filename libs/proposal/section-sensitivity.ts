@@ -1,6 +1,9 @@
 import type { BankOutcome, ReactorTrial, StageOut } from '#libs/engine/index.js';
+import { engineName } from '#libs/present/engine-name.js';
 import { FIRMNESS_HEADS, firmnessFinding, firmnessRows } from '#libs/present/firmness.js';
+import { lowered } from '#libs/present/first-letter.js';
 import { formatQuantity } from '#libs/present/format-number.js';
+import { say } from '#libs/present/language.js';
 import { TRIAL_HEADS, trialRows } from '#libs/present/trial-rows.js';
 import { verdictWords } from '#libs/present/verdict-words.js';
 import { NOTE, type Paper } from './paper.js';
@@ -11,11 +14,11 @@ import { BODY } from './typesetter.js';
 export function drawSensitivity(paper: Paper, { result }: BankOutcome): void {
   const { robustness } = result;
   if (robustness === null) {
-    paper.heading('10', 'Sensitivity: not computed');
-    paper.paragraph(['How far the verdict stands when an input moves was not asked for.']);
+    paper.heading('10', say`Sensitivity: not computed`);
+    paper.paragraph([say`How far the verdict stands when an input moves was not asked for.`]);
     return;
   }
-  paper.heading('10', `Sensitivity: ${lowered(firmnessFinding(robustness))}`, { keep: 110 });
+  paper.heading('10', say`Sensitivity: ${lowered(firmnessFinding(robustness))}`, { keep: 110 });
   if (robustness.ranges.length > 0) {
     const columns = [
       { head: FIRMNESS_HEADS[0], share: 22 },
@@ -23,7 +26,9 @@ export function drawSensitivity(paper: Paper, { result }: BankOutcome): void {
       { head: FIRMNESS_HEADS[2], share: 39 },
     ];
     drawTable(paper, columns, firmnessRows(robustness), { after: 5 });
-    paper.paragraph(['Each moved by itself, times its own value, until the verdict is another one.'], { style: NOTE });
+    paper.paragraph([say`Each moved by itself, times its own value, until the verdict is another one.`], {
+      style: NOTE,
+    });
   }
   drawStagesOut(paper, robustness.stageOut);
   drawTrials(paper, result.reactorTrials);
@@ -32,10 +37,10 @@ export function drawSensitivity(paper: Paper, { result }: BankOutcome): void {
 function drawStagesOut(paper: Paper, stageOut: readonly StageOut[]): void {
   if (stageOut.length === 0) return;
   const columns = [
-    { head: 'one stage out of', share: 22 },
-    { head: 'verdict', share: 22 },
-    { head: 'nearest to its limit', share: 38 },
-    { head: 'share of it', share: 18, align: 'right' as const },
+    { head: say`one stage out of`, share: 22 },
+    { head: say`verdict`, share: 22 },
+    { head: say`nearest to its limit`, share: 38 },
+    { head: say`share of it`, share: 18, align: 'right' as const },
   ];
   drawTable(paper, columns, stageOut.map(stageRow), { after: 5 });
 }
@@ -44,23 +49,18 @@ const TRIAL_SHARES = [20, 9, 14, 12, 15, 9, 15, 31] as const;
 
 function drawTrials(paper: Paper, trials: readonly ReactorTrial[]): void {
   if (trials.length === 0) return;
-  paper.heading('10.1', 'Reactor ratios tried with the same stages', { level: 3 });
+  paper.heading('10.1', say`Reactor ratios tried with the same stages`, { level: 3 });
   const columns = TRIAL_HEADS.map((head, at) => ({ head, share: TRIAL_SHARES[at]! }));
   drawTable(paper, columns, trialRows(trials), { style: { ...BODY, size: 8.6 }, after: 5 });
-  const note =
-    'A filter is tuned a little below the order of the greatest current, to take it up; its stage carries that current.';
+  const note = say`A filter is tuned a little below the order of the greatest current, to take it up; its stage carries that current.`;
   paper.paragraph([note], { style: NOTE });
 }
 
 function stageRow({ group, verdict, worstDuty, worstRatio }: StageOut): string[] {
   return [
-    `group ${group + 1}`,
+    say`group ${group + 1}`,
     verdictWords(verdict),
-    worstDuty ?? '–',
+    worstDuty === null ? '–' : engineName(worstDuty),
     worstRatio === null ? '–' : formatQuantity(100 * worstRatio, '%'),
   ];
-}
-
-function lowered(text: string): string {
-  return text.charAt(0).toLowerCase() + text.slice(1);
 }

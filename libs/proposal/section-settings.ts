@@ -1,5 +1,6 @@
 import type { BankOutcome } from '#libs/engine/index.js';
 import { controllerSheet } from '#libs/present/controller-sheet.js';
+import { say } from '#libs/present/language.js';
 import { blankCell } from './blank-cell.js';
 import { NOTE, type Paper } from './paper.js';
 import { type Cell, drawTable } from './table.js';
@@ -8,17 +9,17 @@ import { type Cell, drawTable } from './table.js';
 export function drawSettings(paper: Paper, outcome: BankOutcome): void {
   const lines = controllerSheet(outcome);
   if (lines.length === 0) {
-    paper.heading('16', 'Controller settings: there is no controller');
-    paper.paragraph(['Nothing is switched, so nothing is to be set.']);
+    paper.heading('16', say`Controller settings: there is no controller`);
+    paper.paragraph([say`Nothing is switched, so nothing is to be set.`]);
     return;
   }
   paper.turnUnlessFresh();
-  paper.heading('16', `Controller settings: ${lines.length} to be entered and written down as left`);
+  paper.heading('16', say`Controller settings: ${lines.length} to be entered and written down as left`);
   const columns = [
-    { head: 'setting', share: 38 },
-    { head: 'enter', share: 20, align: 'right' as const },
-    { head: 'how derived', share: 42 },
-    { head: 'as left', share: 18 },
+    { head: say`setting`, share: 38 },
+    { head: say`enter`, share: 20, align: 'right' as const },
+    { head: say`how derived`, share: 42 },
+    { head: say`as left`, share: 18 },
   ];
   drawTable(
     paper,
@@ -28,7 +29,7 @@ export function drawSettings(paper: Paper, outcome: BankOutcome): void {
   );
   paper.paragraph(
     [
-      'The controller’s own names differ. What is left otherwise than here is written down, and the plan is computed again.',
+      say`The controller’s own names differ. What is left otherwise than here is written down, and the plan is computed again.`,
     ],
     { style: NOTE },
   );

@@ -1,3 +1,4 @@
+import { say, words } from '#libs/present/language.js';
 import { formatDate } from '#libs/present/local-stamp.js';
 import { INK, SOFT, STROKE } from './ink.js';
 import { LABEL, leading, NOTE, type Paper, rise } from './paper.js';
@@ -5,17 +6,17 @@ import type { PrintedReview } from './printed-review.js';
 import type { ProposalFrame } from './proposal-frame.js';
 import { BODY, type Piece, type Style } from './typesetter.js';
 
-const ROLES: [string, string, string][] = [
+const ROLES: [string, string, string][] = words([
   ['prepared', 'planner', 'date'],
   ['checked', 'licence', 'date'],
   ['approved', 'licence, jurisdiction', 'date'],
-];
+]);
 const NOTE_STYLE: Style = { ...LABEL, ink: SOFT };
 const HEIGHT = 62;
 
 /** Who prepared, checked and approved: places to sign on a draft; on an approved paper what each signed, and in what capacity. */
 export function drawSignatures(paper: Paper, frame: ProposalFrame): void {
-  paper.heading('1', 'Prepared, checked, approved', { keep: HEIGHT + 4 });
+  paper.heading('1', say`Prepared, checked, approved`, { keep: HEIGHT + 4 });
   if (frame.review === undefined) drawPlaces(paper, frame);
   else drawSigned(paper, frame.review, frame.preparedBy);
 }
@@ -48,7 +49,7 @@ function drawPlaces(paper: Paper, frame: ProposalFrame): void {
 
 /** Each signature with its own statement, and what was worked out by hand. */
 function drawSigned(paper: Paper, review: PrintedReview, preparedBy: string | null): void {
-  if (preparedBy !== null) paper.paragraph([{ text: 'Prepared by ', ink: SOFT }, preparedBy], { after: 4 });
+  if (preparedBy !== null) paper.paragraph([{ text: say`Prepared by `, ink: SOFT }, preparedBy], { after: 4 });
   if (review.ownApproval !== null) {
     paper.paragraph([{ text: review.ownApproval, weight: 'semibold' }], { after: 6 });
   }
@@ -58,14 +59,14 @@ function drawSigned(paper: Paper, review: PrintedReview, preparedBy: string | nu
     paper.y += 5;
     const who = `${name}, ${licence}, ${jurisdiction}, ${formatDate(date)}`;
     const signed: Piece[] = [
-      { text: `In the capacity of ${capacity}: `, ink: SOFT },
+      { text: say`In the capacity of ${capacity}: `, ink: SOFT },
       { text: who, weight: 'semibold' },
     ];
     paper.paragraph(signed, { after: 2 });
     paper.paragraph([statement], { style: NOTE, after: 7 });
   }
   if (review.handChecks.length > 0) {
-    paper.paragraph([{ text: 'Checked by hand: ', ink: SOFT }, `${review.handChecks.join('; ')}.`], { after: 4 });
+    paper.paragraph([{ text: say`Checked by hand: `, ink: SOFT }, `${review.handChecks.join('; ')}.`], { after: 4 });
   }
 }
 
@@ -73,9 +74,9 @@ function drawSigned(paper: Paper, review: PrintedReview, preparedBy: string | nu
 export function drawAccepted(paper: Paper, { review }: ProposalFrame): void {
   for (const { what, reason, by, date } of review?.accepted ?? []) {
     const accepted: Piece[] = [
-      { text: `Accepted by ${by}, ${formatDate(date)}: `, ink: SOFT },
+      { text: say`Accepted by ${by}, ${formatDate(date)}: `, ink: SOFT },
       `${what} `,
-      { text: 'Reason: ', ink: SOFT },
+      { text: say`Reason: `, ink: SOFT },
       reason,
     ];
     paper.paragraph(accepted, { after: 4 });

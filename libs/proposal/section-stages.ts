@@ -1,6 +1,7 @@
 import { type BankOutcome, dischargeS, type StageGroup } from '#libs/engine/index.js';
 import { countWord } from '#libs/present/findings.js';
-import { formatNumber, formatQuantity, GAP } from '#libs/present/format-number.js';
+import { formatNumber, formatQuantity } from '#libs/present/format-number.js';
+import { say, words } from '#libs/present/language.js';
 import { formatLength } from '#libs/present/local-stamp.js';
 import { bothRatings } from '#libs/present/single-line.js';
 import { NOTE, type Paper } from './paper.js';
@@ -12,13 +13,16 @@ export function drawStages(paper: Paper, outcome: BankOutcome): void {
   const { bank, result } = outcome;
   const count = result.bank.stages.length;
   if (count === 0) {
-    paper.heading('7', 'Stages, protection, discharge: there is no bank');
-    paper.paragraph(['Nothing is connected, so nothing has to be protected or discharged.']);
+    paper.heading('7', say`Stages, protection, discharge: there is no bank`);
+    paper.paragraph([say`Nothing is connected, so nothing has to be protected or discharged.`]);
     return;
   }
   const kvar = formatQuantity(result.bank.effectiveKvar, 'kvar');
-  paper.heading('7', `Stages, protection, discharge: ${countWord(count)} ${count === 1 ? 'stage' : 'stages'}, ${kvar}`);
-  paper.heading('7.1', 'Stages, both ratings with their voltages', { level: 3 });
+  paper.heading(
+    '7',
+    say`Stages, protection, discharge: ${countWord(count)} ${count === 1 ? say`stage` : say`stages`}, ${kvar}`,
+  );
+  paper.heading('7.1', say`Stages, both ratings with their voltages`, { level: 3 });
   drawTable(
     paper,
     STAGE_COLUMNS,
@@ -31,7 +35,7 @@ export function drawStages(paper: Paper, outcome: BankOutcome): void {
   drawDischarge(paper, outcome);
 }
 
-const STAGE_COLUMNS: Column[] = [
+const STAGE_COLUMNS: Column[] = words([
   { head: 'group', share: 8 },
   { head: 'stages', share: 9, align: 'right' },
   { head: 'ratings of one stage', share: 38 },
@@ -39,7 +43,7 @@ const STAGE_COLUMNS: Column[] = [
   { head: 'on the capacitor', share: 18, align: 'right' },
   { head: 'tuned order', share: 14, align: 'right' },
   { head: 'switched', share: 14 },
-];
+]);
 
 function stageRow(outcome: BankOutcome, group: StageGroup, at: number): string[] {
   const stage = outcome.result.bank.stages.find(
@@ -49,10 +53,10 @@ function stageRow(outcome: BankOutcome, group: StageGroup, at: number): string[]
     String(at + 1),
     String(group.count),
     bothRatings(outcome, group),
-    group.reactorPct > 0 ? formatQuantity(group.reactorPct, '%', 'given') : 'none',
+    group.reactorPct > 0 ? formatQuantity(group.reactorPct, '%', 'given') : say`none`,
     formatQuantity(stage?.capacitorV ?? null, 'V'),
     formatQuantity(stage?.tunedOrderH ?? null, ''),
-    group.fixed ? 'never' : 'yes',
+    group.fixed ? say`never` : say`yes`,
   ];
 }
 
@@ -60,17 +64,17 @@ function levelWords({ result }: BankOutcome): string {
   const levels = result.bank.levelsKvar.map((kvar) => formatNumber(kvar));
   const listed =
     levels.length <= 24 ? levels.join(', ') : `${levels.slice(0, 12).join(', ')} … ${levels.slice(-4).join(', ')}`;
-  return `${levels.length} levels, kvar: ${listed}.`;
+  return say`${levels.length} levels, kvar: ${listed}.`;
 }
 
 function drawControl(paper: Paper, { result }: BankOutcome): void {
   const { control } = result;
-  const modes = { nearestLevel: 'nearest level', oneByOne: 'one by one' };
-  const wear = { even: 'by turns', inOrder: 'in order' };
+  const modes = { nearestLevel: say`nearest level`, oneByOne: say`one by one` };
+  const wear = { even: say`by turns`, inOrder: say`in order` };
   paper.paragraph([
-    `Controller: set point ${formatNumber(control.setPointPowerFactor, 'given')}, ${modes[control.mode]}, response ` +
-      `${formatNumber(control.responseRatio, 'given')} of the smallest stage, step delay ${formatQuantity(control.stepDelayS, 's', 'given')}, ` +
-      `reconnection delay ${formatQuantity(control.reconnectDelayS, 's', 'given')}, equal stages ${wear[control.wear]}.`,
+    say`Controller: set point ${formatNumber(control.setPointPowerFactor, 'given')}, ${modes[control.mode]}, response
+      ${formatNumber(control.responseRatio, 'given')} of the smallest stage, step delay ${formatQuantity(control.stepDelayS, 's', 'given')},
+      reconnection delay ${formatQuantity(control.reconnectDelayS, 's', 'given')}, equal stages ${wear[control.wear]}.`,
   ]);
 }
 
@@ -78,35 +82,37 @@ function drawDischarge(paper: Paper, outcome: BankOutcome): void {
   const { bank, result } = outcome;
   const waits = bank.groups.map((group, at) => waitS(outcome, group, at));
   const longest = Math.max(...waits);
-  paper.heading('7.3', `Discharge: wait ${waitWords(longest)} after switching off, then prove dead`, { level: 3 });
+  paper.heading('7.3', say`Discharge: wait ${waitWords(longest)} after switching off, then prove dead`, { level: 3 });
   const columns: Column[] = [
-    { head: 'group', share: 8 },
-    { head: 'capacitance, one phase', share: 20, align: 'right' },
-    { head: 'to be reached', share: 22, align: 'right' },
-    { head: 'resistor at most', share: 19, align: 'right' },
-    { head: 'for the delay', share: 18, align: 'right' },
-    { head: 'fitted', share: 15, align: 'right' },
-    { head: 'its loss', share: 12, align: 'right' },
-    { head: 'waiting time', share: 22, align: 'right' },
+    { head: say`group`, share: 8 },
+    { head: say`capacitance, one phase`, share: 20, align: 'right' },
+    { head: say`to be reached`, share: 22, align: 'right' },
+    { head: say`resistor at most`, share: 19, align: 'right' },
+    { head: say`for the delay`, share: 18, align: 'right' },
+    { head: say`fitted`, share: 15, align: 'right' },
+    { head: say`its loss`, share: 12, align: 'right' },
+    { head: say`waiting time`, share: 22, align: 'right' },
   ];
   const rows = result.charge.stages.map((stage, at) => [
     String(stage.group + 1),
     formatQuantity(stage.capacitanceUf, 'µF'),
-    `${formatQuantity(stage.dischargeToV, 'V', 'given')} in ${formatQuantity(stage.dischargeWithinS, 's', 'given')}`,
+    say`${formatQuantity(stage.dischargeToV, 'V', 'given')} in ${formatQuantity(stage.dischargeWithinS, 's', 'given')}`,
     formatQuantity(stage.dischargeMaxOhm, 'Ω'),
     formatQuantity(stage.reconnectMaxOhm, 'Ω'),
-    bank.groups[at]?.dischargeOhm == null ? 'not stated' : formatQuantity(bank.groups[at].dischargeOhm, 'Ω', 'given'),
+    bank.groups[at]?.dischargeOhm == null
+      ? say`not stated`
+      : formatQuantity(bank.groups[at].dischargeOhm, 'Ω', 'given'),
     formatQuantity(stage.dischargeLossW, 'W'),
     waitWords(waits[at]!),
   ]);
   drawTable(paper, columns, rows, { after: 4 });
   const required = result.charge.stages.map(
-    (stage) => `group${GAP}${stage.group + 1}: ${formatQuantity(stage.requiredOhm, 'Ω')}`,
+    (stage) => say`group\u00a0${stage.group + 1}: ${formatQuantity(stage.requiredOhm, 'Ω')}`,
   );
   paper.paragraph([
-    `Required, the smaller of the two, across each delta phase: ${required.join('; ')}. A stage is switched in again only below ` +
-      `10 % of its rated voltage, so the reconnection delay of ${formatQuantity(result.control.reconnectDelayS, 's', 'given')} runs by hand as well. ` +
-      'The loss is that of the required resistor in one phase. Section 15 says how to make safe before touching.',
+    say`Required, the smaller of the two, across each delta phase: ${required.join('; ')}. A stage is switched in again only below
+      10 % of its rated voltage, so the reconnection delay of ${formatQuantity(result.control.reconnectDelayS, 's', 'given')} runs by hand as well.
+      The loss is that of the required resistor in one phase. Section 15 says how to make safe before touching.`,
   ]);
 }
 

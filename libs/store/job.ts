@@ -14,6 +14,11 @@ export class Job {
   @PrimaryGeneratedColumn({ type: 'integer' })
   id: number;
 
+  /** what it is called outside; a number would tell how much work others have */
+  @Index('job_public', { unique: true })
+  @Column({ type: 'varchar', length: 36, default: '' })
+  publicId: string;
+
   @Index('job_site')
   @ForeignKey(() => StoredSite, { onDelete: 'CASCADE', name: 'job_site_fk' })
   @Column({ type: 'varchar', length: 36 })

@@ -1,3 +1,4 @@
+import { randomUUID } from 'node:crypto';
 import { type EntityManager, In } from 'typeorm';
 import { Job, type JobState } from './job.js';
 import type { Store } from './store.js';
@@ -23,6 +24,7 @@ export async function insertJob(manager: EntityManager, request: JobRequest, now
   if (same !== null) return same;
   const job = manager.create(Job, {
     ...request,
+    publicId: randomUUID(),
     state: 'queued',
     attempt: 0,
     step: 1,

@@ -2,6 +2,7 @@ import {
   type BusColumns,
   busColumns,
   type ComplexColumn,
+  type CornerCase,
   invertInto,
   type NetworkScene,
   networkColumns,
@@ -33,7 +34,8 @@ function scanOf(what: string, buses: number, limit: number): TwinWork {
   const { model, bank } = scene;
   const ordersH = Float64Array.from({ length: ORDERS }, (_, i) => 1 + i * 0.02);
   const counts = Float64Array.from({ length: LEVELS }, (_, i) => i);
-  const corners = model.corners.corners.slice(1);
+  // The network's own capacitors as their nameplates say: at their ends a corner costs the same.
+  const corners = model.corners.corners.slice(1).filter(({ corner }) => corner.networkCapacitanceFactor === undefined);
   if (corners.length !== CORNERS || bank.groups.length !== 1) throw new Error('eight corners of one group were meant');
   const size = buses * LEVELS * ORDERS;
   const output = new Float64Array(CORNERS * size);
@@ -46,7 +48,7 @@ function scanOf(what: string, buses: number, limit: number): TwinWork {
     twin: 'buses',
     limit,
     runs: 5,
-    input: twinInput(scene, { buses, ordersH, counts, stageAt }),
+    input: twinInput(scene, { buses, corners, ordersH, counts, stageAt }),
     ours: () => {
       const columns: BusColumns[][] = [];
       const stages: ComplexColumn[] = [];
@@ -98,13 +100,14 @@ function twinInput(
   { model }: NetworkScene,
   grid: {
     buses: number;
+    corners: readonly CornerCase[];
     ordersH: Float64Array;
     counts: Float64Array;
     stageAt(factors: number): { re: Float64Array; im: Float64Array };
   },
 ): Float64Array {
   const { nodes, busNode } = model.nodal!.cases[0]!;
-  const parts = model.corners.corners.slice(1).flatMap(({ network, factors }) => {
+  const parts = grid.corners.flatMap(({ network, factors }) => {
     const { z } = nodalTable(model.nodal!.cases[network]!, grid.ordersH);
     const y = new Float64Array(z.length);
     for (let i = 0; i < ORDERS; i++) {

@@ -31,7 +31,7 @@ export interface Cell {
 /** Bodies that get as far as the object a route is about; what has none is sent an empty one. */
 export type Bodies = Record<string, { body?: unknown; type?: string; query?: string }>;
 
-const NUMBERS = ['revision', 'other', 'jobId'];
+const NUMBERS = ['revision', 'other'];
 /** Refused as stale by what heeds it, so that no cell changes what the next one asks for. */
 const UNSEEN = { 'if-match': '"999"' };
 

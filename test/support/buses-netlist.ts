@@ -16,6 +16,8 @@ export interface Circuit {
 }
 
 interface Ohm {
+  /** resistance that does not grow with order */
+  steady?: number;
   r: number;
   x: number;
   /** capacitive reactance, 0 for none */
@@ -55,10 +57,10 @@ class Writer {
   }
 
   // Resistance, coil and capacitor in series; the coil's current can be read where there is one.
-  #series(name: string, from: string, to: string, { r, x, c = 0 }: Ohm): string[] {
+  #series(name: string, from: string, to: string, { steady = 0, r, x, c = 0 }: Ohm): string[] {
     const w = 2 * Math.PI * this.#site.frequencyHz;
     const parts: [string, number][] = [];
-    if (r > 0) parts.push(['r', r * this.#growth]);
+    if (steady + r > 0) parts.push(['r', steady + r * this.#growth]);
     if (x > 0) parts.push(['l', x / w]);
     if (c > 0) parts.push(['c', 1 / (w * c)]);
     const t = this.#circuit.tag;
@@ -98,7 +100,7 @@ class Writer {
       }),
       ...cables.flatMap(({ between: [from, to], lengthM, resistanceOhmPerKm, reactanceOhmPerKm, parallel = 1 }, k) => {
         const km = lengthM / 1000 / parallel;
-        const ohm = { r: resistanceOhmPerKm * km, x: reactanceOhmPerKm * km };
+        const ohm = { steady: resistanceOhmPerKm * km, r: 0, x: reactanceOhmPerKm * km };
         return this.#series(`w${k}`, this.#node(from), this.#node(to), ohm);
       }),
     ];
@@ -143,7 +145,7 @@ class Writer {
       ratedV: number;
       reactorPct?: number;
       reactorQuality?: number;
-    }): Required<Ohm> => {
+    }): Required<Omit<Ohm, 'steady'>> => {
       const c = stage.ratedV ** 2 / (stage.ratedKvar * 1000);
       const x = ((stage.reactorPct ?? 0) / 100) * c;
       return { r: x / (stage.reactorQuality ?? 30), x, c };
@@ -162,8 +164,11 @@ class Writer {
         const name = set.name ?? `capacitors ${g + 1}`;
         const fewer = this.#standing.find((part) => part.endsWith(` of ${name}`));
         const count = fewer === undefined ? set.count : Number.parseInt(fewer, 10);
+        const { r, x, c } = ohm(set);
+        const { networkInductanceFactor = 1, networkCapacitanceFactor = 1 } = corner;
+        const inCorner = { r, x: x * networkInductanceFactor, c: c / networkCapacitanceFactor };
         return Array.from({ length: count }, (_, k) =>
-          this.#series(`f${g}x${k}`, this.#node(set.bus), '0', ohm(set)),
+          this.#series(`f${g}x${k}`, this.#node(set.bus), '0', inCorner),
         ).flat();
       }),
     ];

@@ -1,7 +1,7 @@
 import type { EstimateResult, Result, Verdict } from '#libs/engine/index.js';
 import { formatNumber, formatQuantity } from '#libs/present/format-number.js';
 import { formatMonth } from '#libs/present/local-stamp.js';
-import { NO_PERMISSION, VERDICT_WORDS } from '#libs/present/verdict-words.js';
+import { noPermission, VERDICT_WORDS } from '#libs/present/verdict-words.js';
 import { type Html, html } from './html.js';
 import { framedPage } from './page-frame.js';
 import type { ShownRevision, SiteView } from './site-view.js';
@@ -41,7 +41,7 @@ function revisionParts(revision: ShownRevision): Html[] {
   return [
     html`<p>${proposed}</p>
 <p>${verdictMark(result.verdict)}</p>
-<p class="soft">${NO_PERMISSION}</p>`,
+<p class="soft">${noPermission()}</p>`,
     result.record === null ? estimatedFigures(result) : keyFigures(result),
     rivalWords(revision),
     reasonList(result),

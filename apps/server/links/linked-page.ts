@@ -1,4 +1,4 @@
-import { NO_PERMISSION, VERDICT_WORDS } from '#libs/present/verdict-words.js';
+import { noPermission, VERDICT_WORDS } from '#libs/present/verdict-words.js';
 import type { Revision } from '#libs/store/revision.js';
 import { html } from '../home/html.js';
 import { formPage } from '../people/form-page.js';
@@ -15,7 +15,7 @@ export function linkedPage(revision: Revision, expiresAt: Date, base: string): s
     `${number}, revision ${count}`,
     html`<p>${kind === 'plan' ? 'Proposed' : 'Judged'}: ${proposed}</p>
 <p><span class="verdict ${verdict}">${VERDICT_WORDS[verdict]}</span></p>
-<p class="soft">${NO_PERMISSION}</p>
+<p class="soft">${noPermission()}</p>
 <p>${author === null ? 'Made' : `Prepared by ${author}`} on ${day(createdAt)}.</p>
 <ul class="links"><li><a href="${base}/proposal.pdf">Proposal (PDF)</a></li><li><a href="${base}">The same as JSON</a></li></ul>
 <p class="soft">This link shows this revision alone, until ${day(expiresAt)} or until it is revoked.</p>`,

@@ -1,4 +1,4 @@
-import { CAPACITY_WORDS, handCheckWords, OWN_APPROVAL, SIGNATURE_STATEMENTS } from '#libs/present/review-words.js';
+import { CAPACITY_WORDS, handCheckWords, ownApproval, SIGNATURE_STATEMENTS } from '#libs/present/review-words.js';
 import type { PrintedReview } from '#libs/proposal/printed-review.js';
 import type { Review } from '#libs/review/review.js';
 
@@ -18,6 +18,6 @@ export function printedReview({ signatures, findings, figures, handChecks, appro
         ? []
         : [{ what, reason: acceptance.reason, by: acceptance.by.name, date: acceptance.at.slice(0, 10) }],
     ),
-    ownApproval: approval?.isOwn === true ? OWN_APPROVAL : null,
+    ownApproval: approval?.isOwn === true ? ownApproval() : null,
   };
 }

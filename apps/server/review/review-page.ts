@@ -1,6 +1,6 @@
 import type { EstimateResult, Result } from '#libs/engine/index.js';
 import { formatQuantity } from '#libs/present/format-number.js';
-import { CAPACITY_WORDS, handCheckWords, OWN_APPROVAL } from '#libs/present/review-words.js';
+import { CAPACITY_WORDS, handCheckWords, ownApproval } from '#libs/present/review-words.js';
 import type { Person } from '#libs/review/review-act.js';
 import { hasPrepared } from '#libs/review/review.js';
 import type { Revision } from '#libs/store/revision.js';
@@ -48,7 +48,7 @@ function standing({ shown }: ReviewView): Html {
   const { supersededBy, withdrawal, returned, approval, open, stale } = shown;
   return html`
 ${approval === null ? null : html`<p>Approved by ${approval.by.name}, ${approval.at.slice(0, 10)}. Plan and paper are frozen.</p>`}
-${approval?.isOwn === true ? html`<p><strong>${OWN_APPROVAL}</strong></p>` : null}
+${approval?.isOwn === true ? html`<p><strong>${ownApproval()}</strong></p>` : null}
 ${supersededBy === null ? null : html`<p>Superseded by revision ${supersededBy}.</p>`}
 ${withdrawal === null ? null : html`<p>Withdrawn by ${withdrawal.by.name}: ${withdrawal.reason}</p>`}
 ${returned === null ? null : html`<p>Returned by ${returned.by.name}: ${returned.reason}</p>`}

@@ -85,7 +85,7 @@ export interface ReviewShown {
 
 /** A job as the API gives it. */
 export interface JobShown {
-  id: number;
+  id: string;
   kind: 'plan' | 'assess' | 'import';
   state: 'queued' | 'running' | 'done' | 'failed' | 'cancelled';
   progress: number;

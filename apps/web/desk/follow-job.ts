@@ -12,9 +12,8 @@ const keyOf = (siteId: string, what: Awaited) => `varwright:${what}:${siteId}`;
 const ASK_AGAIN_MS = 400;
 
 /** @returns the job this browser waited for when the page was left */
-export function keptJob(siteId: string, what: Awaited = 'job'): number | null {
-  const id = Number(localStorage.getItem(keyOf(siteId, what)) ?? Number.NaN);
-  return Number.isInteger(id) && id > 0 ? id : null;
+export function keptJob(siteId: string, what: Awaited = 'job'): string | null {
+  return localStorage.getItem(keyOf(siteId, what));
 }
 
 /**
@@ -23,11 +22,11 @@ export function keptJob(siteId: string, what: Awaited = 'job'): number | null {
  */
 export function followJob(
   siteId: string,
-  jobId: number,
+  jobId: string,
   ears: { moved(job: JobShown): void; ended(end: JobEnd): void },
   what: Awaited = 'job',
 ): () => void {
-  localStorage.setItem(keyOf(siteId, what), String(jobId));
+  localStorage.setItem(keyOf(siteId, what), jobId);
   let isOver = false;
   let timer: ReturnType<typeof setTimeout> | undefined;
   const hear = (job: JobShown) => {

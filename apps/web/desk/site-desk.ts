@@ -118,7 +118,7 @@ export class SiteDesk {
     try {
       if (isChanged(this.#state)) await this.#save(kind);
       const way = kind === 'plan' ? 'plans' : 'assessments';
-      const { body } = await ask<RevisionShown | { id: number }>(`${this.#path()}/${way}`, {
+      const { body } = await ask<RevisionShown | { id: string }>(`${this.#path()}/${way}`, {
         method: 'POST',
         json: {},
       });
@@ -194,7 +194,7 @@ export class SiteDesk {
     this.#look(true);
   }
 
-  #follow(jobId: number): void {
+  #follow(jobId: string): void {
     this.#stopJob?.();
     this.#stopJob = followJob(this.siteId, jobId, {
       moved: (job) => this.#set({ job }),

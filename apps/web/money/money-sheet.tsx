@@ -7,7 +7,7 @@ import {
   financeWords,
   formatMoney,
   formatPayback,
-  NO_GUARANTEE,
+  noGuarantee,
   priceBookWords,
   tariffWords,
 } from '#libs/present/money-words.js';
@@ -60,8 +60,8 @@ function Figures({ money, papers }: { money: Money; papers: MoneyPapers }) {
     <>
       <Headline figures={isPriced(money) ? keyFigures(money, currency) : []}>
         {money.recommended === 'do nothing'
-          ? `Nothing is to be built for money’s sake; ${NO_GUARANTEE}.`
-          : `The bank saves ${saving} a year, ${NO_GUARANTEE}.`}
+          ? `Nothing is to be built for money’s sake; ${noGuarantee()}.`
+          : `The bank saves ${saving} a year, ${noGuarantee()}.`}
       </Headline>
       <p className="caption">
         {tariffWords(papers)} {priceBookWords(papers)} {isPriced(money) ? financeWords(papers) : ''}

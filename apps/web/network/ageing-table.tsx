@@ -1,5 +1,5 @@
 import type { Ageing } from '#libs/engine/index.js';
-import { AGEING_HEADS, AGEING_NOTE, ageingFinding, ageingRows } from '#libs/present/ageing-rows.js';
+import { AGEING_HEADS, ageingNote, ageingFinding, ageingRows } from '#libs/present/ageing-rows.js';
 import { RowTable } from '../draw/row-table.js';
 import { VerdictWords } from '../draw/verdict-mark.js';
 
@@ -15,7 +15,7 @@ export function AgeingTable({ ageing }: { ageing: Ageing }) {
   return (
     <section className="section" aria-labelledby="ageing">
       <h2 id="ageing">{`As capacitors age, ${ageingFinding(ageing)}`}</h2>
-      <p className="caption">{AGEING_NOTE}</p>
+      <p className="caption">{ageingNote()}</p>
       <RowTable name="Ageing" heads={AGEING_HEADS} rows={rows} right={[1, 2, 3, 5]} />
     </section>
   );

@@ -1,6 +1,6 @@
 import { formatQuantity, inShownMark } from '#libs/present/format-number.js';
 import { STATE_WORDS } from '#libs/present/review-words.js';
-import { NO_PERMISSION } from '#libs/present/verdict-words.js';
+import { noPermission } from '#libs/present/verdict-words.js';
 import { reevaluationAddress } from '../address.js';
 import type { RevisionHeadShown, RevisionShown } from '../api/shown.js';
 import { isChanged, staleFrom } from '../desk/desk-state.js';
@@ -71,7 +71,7 @@ function KeptPaper({ kept }: { kept: RevisionShown }) {
         </h2>
         <p className="row gap">
           <VerdictWords verdict={verdict} />
-          <span className="soft">{NO_PERMISSION}</span>
+          <span className="soft">{noPermission()}</span>
         </p>
         <p className="row gap">
           <a className="button filled" href={links.proposal} download={`${number}-revision-${revision}.pdf`}>

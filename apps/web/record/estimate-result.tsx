@@ -2,7 +2,7 @@ import type { EstimateResult } from '#libs/engine/index.js';
 import { formatNumber, formatQuantity, inShownMark } from '#libs/present/format-number.js';
 import { formatMonth } from '#libs/present/local-stamp.js';
 import { remarkConsequence } from '#libs/present/remark-words.js';
-import { NO_PERMISSION } from '#libs/present/verdict-words.js';
+import { noPermission } from '#libs/present/verdict-words.js';
 import { siteAddress } from '../address.js';
 import { useDesk } from '../desk/use-desk.js';
 import { ScrollTable } from '../draw/scroll-table.js';
@@ -54,7 +54,7 @@ export function EstimateResultSheet({ result, proposed }: { result: EstimateResu
       </Headline>
       <p className="row gap">
         <VerdictWords verdict={result.verdict} />
-        <span className="soft">{NO_PERMISSION}</span>
+        <span className="soft">{noPermission()}</span>
         <a href={siteAddress(desk.siteId, 'proposal')}>The paper</a>
       </p>
       <MonthTable result={result} />

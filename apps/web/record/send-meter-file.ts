@@ -49,7 +49,7 @@ export async function sendMeterFile(
  * @returns the record, null where the reading was cancelled
  * @throws Refused with problems or questions
  */
-export function followImport(siteId: string, jobId: number, { moved, signal }: Listening): Promise<RecordShown | null> {
+export function followImport(siteId: string, jobId: string, { moved, signal }: Listening): Promise<RecordShown | null> {
   return new Promise((resolve, reject) => {
     const ended = (end: JobShown) => {
       if (end.state === 'failed' && end.error !== null) reject(new Refused(end.error));

@@ -14,7 +14,7 @@ import {
   sinceSentences,
   tonightSentences,
 } from '#libs/present/reevaluation-words.js';
-import { NO_PERMISSION, verdictWords } from '#libs/present/verdict-words.js';
+import { noPermission, verdictWords } from '#libs/present/verdict-words.js';
 import { siteAddress, stationOfPath } from '../address.js';
 import type { ReevaluationShown, SiteShown } from '../api/shown.js';
 import { Plot } from '../draw/plot.js';
@@ -43,7 +43,7 @@ export function ReevaluationSheet({ site, shown }: { site: SiteShown; shown: Ree
         <VerdictWords verdict={reevaluation.verdict.before} />
         <span className="soft">as it stands</span>
         <VerdictWords verdict={reevaluation.verdict.after} />
-        <span className="soft">{NO_PERMISSION}</span>
+        <span className="soft">{noPermission()}</span>
       </p>
       <Tonight reevaluation={reevaluation} />
       <Changes reevaluation={reevaluation} currency={currency} />

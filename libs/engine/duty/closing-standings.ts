@@ -63,13 +63,13 @@ function standing(model: NetworkModel, state: NetworkState, frequencyHz: number)
 }
 
 function networkBranches({ branches, source, sourceNode }: NodalCase, omega: number): NetworkBranch[] {
-  const all = [{ from: sourceNode, to: -1, ...source, capacitiveOhm: 0 }, ...branches];
-  return all.map(({ from, to, rOhm, xOhm, capacitiveOhm }) => ({
+  const all = [{ from: sourceNode, to: -1, steadyOhm: 0, ...source, capacitiveOhm: 0 }, ...branches];
+  return all.map(({ from, to, steadyOhm, rOhm, xOhm, capacitiveOhm }) => ({
     from,
     to,
     // Source and generators: whatever goes to earth without a capacitor.
     driven: to < 0 && capacitiveOhm === 0,
-    rOhm,
+    rOhm: steadyOhm + rOhm,
     inductanceH: xOhm / omega,
     capacitanceF: capacitiveOhm > 0 ? 1 / (omega * capacitiveOhm) : 0,
   }));

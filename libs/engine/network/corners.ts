@@ -1,6 +1,7 @@
 import type { Supply } from '../supply/supply.js';
 import { type SupplyPath, supplyPath } from '../supply/supply-path.js';
 import type { Loads } from './loads.js';
+import { NAMEPLATE, type ToleranceFactors, toleranceEnds } from './tolerance-factors.js';
 import type { NetworkState } from './topology.js';
 
 /** One combination of the uncertain quantities. */
@@ -11,6 +12,9 @@ export interface Corner {
   dampingKw: number;
   /** how couplers, generators, capacitors and transformers stand; absent in the normal standing */
   standing?: string;
+  /** capacitors that stand in the network apart from the bank, relative to their nameplate; absent where they are as it says */
+  networkCapacitanceFactor?: number;
+  networkInductanceFactor?: number;
 }
 
 /** The network without the bank: one supply path and one damping load. */
@@ -30,21 +34,12 @@ export interface CornerCase {
   factors: number;
 }
 
-/** Capacitance and inductance relative to the nameplate. */
-export interface ToleranceFactors {
-  capacitanceFactor: number;
-  inductanceFactor: number;
-}
-
 /** All corners, nominal first, and the networks and factors they are made of. */
 export interface CornerSet {
   corners: CornerCase[];
   networks: NetworkCase[];
   factors: ToleranceFactors[];
 }
-
-const CAPACITANCE_FACTORS = [0.95, 1.1];
-const INDUCTANCE_FACTORS = [0.97, 1.03];
 
 /**
  * Corners in their fixed order: nominal (greatest fault level, factors 1, most damping, u_k as given), then fault level
@@ -53,7 +48,7 @@ const INDUCTANCE_FACTORS = [0.97, 1.03];
  * @param supply settled supply
  * @param loads settled loads
  * @param nominalV bus voltage [V]
- * @param states standings of the network, the normal one first; [null] for one bus
+ * @param states standings of the network with the tolerances of its own capacitors, the normal one first; [null] for one bus
  * @returns corners with their networks and factors
  * @source method-network
  */
@@ -69,10 +64,7 @@ export function cornerSet(
   const networks: NetworkCase[] = [
     { path: supplyPath(supply, nominalV, max, 'asGiven'), dampingKw: loads.dampingKw.max, state: normal },
   ];
-  const factors: ToleranceFactors[] = [{ capacitanceFactor: 1, inductanceFactor: 1 }];
-  for (const capacitanceFactor of CAPACITANCE_FACTORS) {
-    for (const inductanceFactor of INDUCTANCE_FACTORS) factors.push({ capacitanceFactor, inductanceFactor });
-  }
+  const factors: ToleranceFactors[] = [NAMEPLATE, ...toleranceEnds(true)];
   const corners: CornerCase[] = [
     { corner: { faultLevelMva: max, ...factors[0]!, dampingKw: loads.dampingKw.max }, network: 0, factors: 0 },
   ];
@@ -93,6 +85,18 @@ export function cornerSet(
   return { corners, networks, factors };
 }
 
-function standing(state: NetworkState | null): Pick<Corner, 'standing'> {
-  return state === null || state.name === '' ? {} : { standing: state.name };
+function standing(
+  state: NetworkState | null,
+): Pick<Corner, 'standing' | 'networkCapacitanceFactor' | 'networkInductanceFactor'> {
+  if (state === null) return {};
+  const { name, tolerance } = state;
+  return {
+    ...(name === '' ? {} : { standing: name }),
+    ...(tolerance === undefined
+      ? {}
+      : {
+          networkCapacitanceFactor: tolerance.capacitanceFactor,
+          networkInductanceFactor: tolerance.inductanceFactor,
+        }),
+  };
 }

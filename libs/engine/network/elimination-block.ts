@@ -97,17 +97,17 @@ export class EliminationBlock {
       const at = this.#plan.diagonal[node]! * BLOCK_ORDERS;
       this.#re.fill(conductance[node]!, at, at + this.#ordersH.length);
     }
-    this.#addBranch({ from: sourceNode, to: -1, ...source, capacitiveOhm: 0 }, -1);
+    this.#addBranch({ from: sourceNode, to: -1, steadyOhm: 0, ...source, capacitiveOhm: 0 }, -1);
     for (const [k, branch] of this.#branches.entries()) this.#addBranch(branch, this.#plan.branchEntry[k]!);
   }
 
-  #addBranch({ from, to, rOhm, xOhm, capacitiveOhm }: NodalBranch, link: number): void {
+  #addBranch({ from, to, steadyOhm, rOhm, xOhm, capacitiveOhm }: NodalBranch, link: number): void {
     const [re, im] = [this.#re, this.#im];
     const own = this.#plan.diagonal[from]! * BLOCK_ORDERS;
     const other = to < 0 ? -1 : this.#plan.diagonal[to]! * BLOCK_ORDERS;
     const between = link * BLOCK_ORDERS;
     for (let i = 0; i < this.#ordersH.length; i++) {
-      const r = rOhm * this.#growth[i]!;
+      const r = steadyOhm + rOhm * this.#growth[i]!;
       const x = xOhm * this.#ordersH[i]! - capacitiveOhm * this.#inverseH[i]!;
       const inverse = 1 / (r * r + x * x);
       const g = r * inverse;

@@ -4,7 +4,7 @@ import { type DampingModel, type NetworkTable, networkTable } from './bus-admitt
 import { type CornerSet, cornerSet } from './corners.js';
 import { EliminatedNetwork } from './eliminated-network.js';
 import type { Loads } from './loads.js';
-import { networkStates } from './network-states.js';
+import { networkStates, withTolerances } from './network-states.js';
 import { type NodalCase, nodalCase } from './nodal-case.js';
 import { type NodalTable, nodalTable } from './nodal-impedance.js';
 import { type BusInjection, busInjection, combine, type Excitation, excitation } from './summation.js';
@@ -84,8 +84,7 @@ export function siteNetwork(
 ): NetworkModel {
   const { nominalV, loadA, topology } = site;
   const damping = { nominalV, motorSharePct: loads.motorSharePct };
-  const states = topology === null ? [null] : networkStates(topology);
-  const corners = cornerSet(supply, topology === null ? loads : withListed(loads, topology), nominalV, states);
+  const corners = siteCorners(supply, loads, site);
   const present = excitation(loads, nominalV);
   const nodal = topology === null ? null : nodalModel({ topology, corners, loads, damping, present });
   const model: NetworkModel = {
@@ -104,6 +103,24 @@ export function siteNetwork(
   model.atOrders = corners.networks.map((_, network) => tableAt(model, network, present.ordersH));
   model.drives = model.atOrders.map((table) => drive(table, present));
   return model;
+}
+
+/**
+ * The corners of a site: of one bus, or of every way its network can stand.
+ * @param supply settled supply
+ * @param loads settled loads
+ * @param site bus voltage [V] and the topology, null where there is one bus
+ * @returns corners with their networks and factors
+ * @source method-network
+ */
+export function siteCorners(
+  supply: Supply,
+  loads: Loads,
+  { nominalV, topology }: { nominalV: number; topology: Topology | null },
+): CornerSet {
+  if (topology === null) return cornerSet(supply, loads, nominalV);
+  const states = withTolerances(topology, networkStates(topology));
+  return cornerSet(supply, withListed(loads, topology), nominalV, states);
 }
 
 /**

@@ -92,8 +92,8 @@ function copyOf(model: NetworkModel, nodal: NodalCase, scene: NetlistScene, orde
   lines.push(`ibank_${suffix} 0 ${node(nodal.busNode[model.bankBus]!)} dc 0 ac 1`);
   const source = { rOhm: nodal.source.rOhm * growth, xOhm: nodal.source.xOhm, capacitiveOhm: 0 };
   branch('source', [node(nodal.sourceNode), '0'], source);
-  for (const [i, { from, to, rOhm, xOhm, capacitiveOhm }] of nodal.branches.entries()) {
-    branch(`part${i + 1}`, [node(from), node(to)], { rOhm: rOhm * growth, xOhm, capacitiveOhm });
+  for (const [i, { from, to, steadyOhm, rOhm, xOhm, capacitiveOhm }] of nodal.branches.entries()) {
+    branch(`part${i + 1}`, [node(from), node(to)], { rOhm: steadyOhm + rOhm * growth, xOhm, capacitiveOhm });
   }
   for (const [k, siemens] of nodal.conductance.entries()) {
     if (siemens > 0) lines.push(`rload${k + 1}_${suffix} ${node(k)} 0 ${number(1 / siemens)}`);

@@ -1,4 +1,5 @@
 import { InputProblem } from '../problem.js';
+import { toleranceEnds } from './tolerance-factors.js';
 import { MOST_STATES, type NetworkState, type Topology } from './topology.js';
 
 /**
@@ -43,6 +44,23 @@ export function networkStates(topology: Topology): NetworkState[] {
   refuseTooMany(states.length);
   refuseIslands(topology, normal);
   return states.filter((state) => state === normal || unsupplied(topology, state).length === 0);
+}
+
+/**
+ * The states in which capacitors of the network are in, at both ends of their tolerance too: all of them together, apart
+ * from the bank's. Each state as the nameplates say comes first, then its ends.
+ * @param topology settled topology
+ * @param states every way the network can stand
+ * @returns the states and their ends; those without capacitors once
+ * @source method-network
+ */
+export function withTolerances({ capacitors }: Topology, states: readonly NetworkState[]): NetworkState[] {
+  return states.flatMap((state) => {
+    const inNow = capacitors.filter((_, i) => state.capacitorsIn[i]! > 0);
+    if (inNow.length === 0) return [state];
+    const reactors = inNow.some(({ group }) => group.reactorPct > 0);
+    return [state, ...toleranceEnds(reactors).map((tolerance) => ({ ...state, tolerance }))];
+  });
 }
 
 function refuseTooMany(count: number): void {

@@ -72,15 +72,23 @@ describe('one standing of a network', () => {
 
   it('leaves out the transformer that is out, and keeps the other at its own bus', () => {
     const transformers = branchesOf({ transformerOut: 0 }).branches.filter(({ from }) => from === 3);
-    expect(transformers).toEqual([{ from: 3, to: 1, rOhm: 0.003, xOhm: 0.02, capacitiveOhm: 0 }]);
+    expect(transformers).toEqual([{ from: 3, to: 1, steadyOhm: 0, rOhm: 0.003, xOhm: 0.02, capacitiveOhm: 0 }]);
   });
 
   it('hangs running generators and the capacitors that are in from their bus: two of 3.2 Ω are 1.6 Ω', () => {
     const shunts = branchesOf({ runningGenerators: [true], capacitorsIn: [2] }).branches.filter(({ to }) => to === -1);
-    expect(shunts[0]).toEqual({ from: 2, to: -1, rOhm: 0.006, xOhm: 0.04, capacitiveOhm: 0 });
+    expect(shunts[0]).toEqual({ from: 2, to: -1, steadyOhm: 0, rOhm: 0.006, xOhm: 0.04, capacitiveOhm: 0 });
     expect(shunts[1]!.capacitiveOhm).toBeCloseTo(1.6, 12);
     expect(shunts[1]!.xOhm).toBeCloseTo(0.07 * 1.6, 12);
     expect(shunts[1]!.rOhm).toBeCloseTo((0.07 * 1.6) / 35, 12);
+  });
+
+  it('moves the capacitors by their tolerance, never the reactor’s resistance', () => {
+    const tolerance = { capacitanceFactor: 1.1, inductanceFactor: 0.97 };
+    const [shunt] = branchesOf({ capacitorsIn: [2], tolerance }).branches.filter(({ to }) => to === -1);
+    expect(shunt!.capacitiveOhm).toBeCloseTo(1.6 / 1.1, 12);
+    expect(shunt!.xOhm).toBeCloseTo(0.97 * 0.07 * 1.6, 12);
+    expect(shunt!.rOhm).toBeCloseTo((0.07 * 1.6) / 35, 12);
   });
 
   // A motor of 100 kW at 400 V: U²/P = 1.6 Ω, a sixth of it reactance and 0.3 of that resistance.
@@ -116,5 +124,17 @@ describe('the impedance matrix of one standing', () => {
     expect(z[0]).toBeCloseTo(0.0021 * 2, 15);
     expect(z[1]).toBeCloseTo(0.011 * 4, 15);
     expect([sourceRe[0], sourceIm[0]]).toEqual([0.0002, 0.004]);
+  });
+
+  // At the end of an unloaded cable Z_cc − Z_bb is the cable's own impedance: 10 mΩ at every order, 8 mΩ·h beside it.
+  it('leaves a cable its resistance at every order', () => {
+    const bare = { ...topology, capacitors: [], generators: [] };
+    const state: NetworkState = { ...normal, runningGenerators: [], capacitorsIn: [] };
+    const { z, nodes } = nodalTable(nodalCase(bare, state, path, damping), Float64Array.of(1, 25));
+    for (const [i, h] of [1, 25].entries()) {
+      const own = (node: number, part: number): number => z[2 * (i * nodes * nodes + node * (nodes + 1)) + part]!;
+      expect(own(2, 0) - own(1, 0)).toBeCloseTo(0.01, 12);
+      expect(own(2, 1) - own(1, 1)).toBeCloseTo(0.008 * h, 12);
+    }
   });
 });

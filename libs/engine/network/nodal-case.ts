@@ -1,11 +1,15 @@
-import { stageOhm } from '../layout/stage.js';
 import type { SupplyPath } from '../supply/supply-path.js';
+import { stageBranch } from './stage-admittance.js';
+import { NAMEPLATE } from './tolerance-factors.js';
 import type { NetworkState, Topology } from './topology.js';
 
-/** A branch that grows with order: Z(h) = R·h^k + jhX − jX_C/h; `to` −1 is earth. */
+/** A branch over order: Z(h) = R₀ + R·h^k + jhX − jX_C/h; `to` −1 is earth. */
 export interface NodalBranch {
   from: number;
   to: number;
+  /** R₀, a cable's: it does not grow with order */
+  steadyOhm: number;
+  /** R, which does */
   rOhm: number;
   xOhm: number;
   /** 0 where there is no capacitor */
@@ -43,7 +47,9 @@ export interface NodalDamping {
 
 /**
  * Nodes and branches of one standing: buses joined by closed couplers are one node; the primary is a node of its own
- * where there are transformers; capacitors that are in, running generators and damping loads hang from their buses.
+ * where there are transformers; capacitors that are in, running generators and damping loads hang from their buses. The
+ * resistance of cables stays at its value at the fundamental: their conductors' skin effect is far below h^k, and less
+ * damping is the graver side.
  * @param topology settled topology
  * @param state how it stands
  * @param path source and transformers at one end of their range
@@ -66,7 +72,7 @@ export function nodalCase(topology: Topology, state: NetworkState, path: SupplyP
     conductance[node]! += load.siemens;
     if (load.motorOhm > 0) {
       const rOhm = MOTOR_RESISTANCE_SHARE * load.motorOhm;
-      branches.push({ from: node, to: -1, rOhm, xOhm: load.motorOhm, capacitiveOhm: 0 });
+      branches.push({ from: node, to: -1, steadyOhm: 0, rOhm, xOhm: load.motorOhm, capacitiveOhm: 0 });
     }
   }
   return {
@@ -88,13 +94,14 @@ function seriesBranches(
   const transformers = topology.transformerBus.flatMap((bus, i) =>
     i === state.transformerOut
       ? []
-      : [{ from: at.sourceNode, to: at.busNode[bus]!, ...at.path.transformers[i]!, capacitiveOhm: 0 }],
+      : [{ from: at.sourceNode, to: at.busNode[bus]!, steadyOhm: 0, ...at.path.transformers[i]!, capacitiveOhm: 0 }],
   );
   const cables = topology.cables
     .map(({ from, to, rOhm, xOhm }) => ({
       from: at.busNode[from]!,
       to: at.busNode[to]!,
-      rOhm,
+      steadyOhm: rOhm,
+      rOhm: 0,
       xOhm,
       capacitiveOhm: 0,
     }))
@@ -105,15 +112,16 @@ function seriesBranches(
 function shuntBranches(topology: Topology, state: NetworkState, busNode: Int32Array): NodalBranch[] {
   const generators = topology.generators
     .filter((_, i) => state.runningGenerators[i])
-    .map(({ bus, rOhm, xOhm }) => ({ from: busNode[bus]!, to: -1, rOhm, xOhm, capacitiveOhm: 0 }));
+    .map(({ bus, rOhm, xOhm }) => ({ from: busNode[bus]!, to: -1, steadyOhm: 0, rOhm, xOhm, capacitiveOhm: 0 }));
   const capacitors = topology.capacitors.flatMap(({ bus, group }, i) => {
     const count = state.capacitorsIn[i]!;
     if (count === 0) return [];
-    const ohm = stageOhm(group);
+    const ohm = stageBranch(group, state.tolerance ?? NAMEPLATE, 0);
     return [
       {
         from: busNode[bus]!,
         to: -1,
+        steadyOhm: 0,
         rOhm: ohm.resistanceOhm / count,
         xOhm: ohm.inductiveOhm / count,
         capacitiveOhm: ohm.capacitiveOhm / count,

@@ -49,16 +49,18 @@ interface BranchColumns {
   from: Int32Array;
   /** −1 is earth */
   to: Int32Array;
+  steadyOhm: Float64Array;
   rOhm: Float64Array;
   xOhm: Float64Array;
   capacitiveOhm: Float64Array;
 }
 
 function branchColumns({ branches, source, sourceNode }: NodalCase): BranchColumns {
-  const all = [...branches, { from: sourceNode, to: -1, rOhm: source.rOhm, xOhm: source.xOhm, capacitiveOhm: 0 }];
+  const all = [...branches, { from: sourceNode, to: -1, steadyOhm: 0, ...source, capacitiveOhm: 0 }];
   return {
     from: Int32Array.from(all, ({ from }) => from),
     to: Int32Array.from(all, ({ to }) => to),
+    steadyOhm: Float64Array.from(all, ({ steadyOhm }) => steadyOhm),
     rOhm: Float64Array.from(all, ({ rOhm }) => rOhm),
     xOhm: Float64Array.from(all, ({ xOhm }) => xOhm),
     capacitiveOhm: Float64Array.from(all, ({ capacitiveOhm }) => capacitiveOhm),
@@ -66,14 +68,14 @@ function branchColumns({ branches, source, sourceNode }: NodalCase): BranchColum
 }
 
 function assembleInto(
-  { from, to, rOhm, xOhm, capacitiveOhm }: BranchColumns,
+  { from, to, steadyOhm, rOhm, xOhm, capacitiveOhm }: BranchColumns,
   { h, growth, n }: { h: number; growth: number; n: number },
   y: Float64Array,
   offset: number,
 ): void {
   const inverseH = 1 / h;
   for (let k = 0; k < from.length; k++) {
-    const r = rOhm[k]! * growth;
+    const r = steadyOhm[k]! + rOhm[k]! * growth;
     const x = xOhm[k]! * h - capacitiveOhm[k]! * inverseH;
     const inverse = 1 / (r * r + x * x);
     const g = r * inverse;

@@ -7,6 +7,7 @@ import type { NetworkModel } from './network-model.js';
 import { HIGHEST_ORDER_H } from './spectra.js';
 import { branchRatio, type StageBranch, stageAdmittance, stageBranch } from './stage-admittance.js';
 import { kindShares, type StageKinds, stageKinds } from './stage-kinds.js';
+import { NAMEPLATE, toleranceEnds } from './tolerance-factors.js';
 
 /** An interior local maximum of |Z(h)| at the bus. */
 export interface Peak {
@@ -210,11 +211,13 @@ function hiddenMinima(exact: (h: number) => number, lowH: number, highH: number)
   return minima;
 }
 
-// Capacitors that stand in the network: tuned orders of their own branches.
+// Capacitors that stand in the network: tuned orders of their own branches, in every corner of theirs.
 function networkTunedOrders(model: NetworkModel): number[] {
   return (model.nodal?.topology.capacitors ?? [])
     .filter(({ group }) => group.reactorPct > 0)
-    .map(({ group }) => 1 / Math.sqrt(group.reactorPct / 100));
+    .flatMap(({ group }) =>
+      [NAMEPLATE, ...toleranceEnds(true)].map((factors) => 1 / Math.sqrt(branchRatio(stageBranch(group, factors, 0)))),
+    );
 }
 
 /**

@@ -127,27 +127,34 @@ export function scanBusesInto(
   }
 }
 
+/** Squares have no division to share and are worked on as many at once as a processor has registers for. */
+const SQUARES_AT_ONCE = 8;
+
 function squaresInto(q: Quadratic, counts: Float64Array, out: Float64Array): void {
   const m = q.a.length;
   let level = 0;
-  for (; !q.delicate && level + LEVELS_AT_ONCE <= counts.length; level += LEVELS_AT_ONCE) {
-    fourSquaresInto(q, counts.subarray(level, level + LEVELS_AT_ONCE), out.subarray(level * m));
+  for (; !q.delicate && level + SQUARES_AT_ONCE <= counts.length; level += SQUARES_AT_ONCE) {
+    eightSquaresInto(q, counts.subarray(level, level + SQUARES_AT_ONCE), out.subarray(level * m));
   }
   for (; level < counts.length; level++) oneSquareInto(q, counts[level]!, out.subarray(level * m, (level + 1) * m));
 }
 
-function fourSquaresInto({ a, b, c }: Quadratic, counts: Float64Array, out: Float64Array): void {
+function eightSquaresInto({ a, b, c }: Quadratic, counts: Float64Array, out: Float64Array): void {
   const m = a.length;
   const [n0, n1, n2, n3] = [counts[0]!, counts[1]!, counts[2]!, counts[3]!];
-  const [second, third, fourth] = [m, 2 * m, 3 * m];
+  const [n4, n5, n6, n7] = [counts[4]!, counts[5]!, counts[6]!, counts[7]!];
   for (let i = 0; i < m; i++) {
     const ai = a[i]!;
     const bi = b[i]!;
     const ci = c[i]!;
     out[i] = ai + n0 * (bi + n0 * ci);
-    out[second + i] = ai + n1 * (bi + n1 * ci);
-    out[third + i] = ai + n2 * (bi + n2 * ci);
-    out[fourth + i] = ai + n3 * (bi + n3 * ci);
+    out[m + i] = ai + n1 * (bi + n1 * ci);
+    out[2 * m + i] = ai + n2 * (bi + n2 * ci);
+    out[3 * m + i] = ai + n3 * (bi + n3 * ci);
+    out[4 * m + i] = ai + n4 * (bi + n4 * ci);
+    out[5 * m + i] = ai + n5 * (bi + n5 * ci);
+    out[6 * m + i] = ai + n6 * (bi + n6 * ci);
+    out[7 * m + i] = ai + n7 * (bi + n7 * ci);
   }
 }
 

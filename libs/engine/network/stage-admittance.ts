@@ -2,7 +2,7 @@ import type { StageGroup } from '../layout/bank.js';
 import { stageOhm } from '../layout/stage.js';
 import { resistanceGrowth } from '../quantity/resistance-growth.js';
 import type { ComplexColumn } from './bus-admittance.js';
-import type { ToleranceFactors } from './corners.js';
+import type { ToleranceFactors } from './tolerance-factors.js';
 
 /** A stage's branch at the fundamental in one corner, per phase [Ω]. */
 export interface StageBranch {

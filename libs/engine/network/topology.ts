@@ -1,4 +1,5 @@
 import type { StageGroup, StageGroupInput } from '../layout/bank.js';
+import type { ToleranceFactors } from './tolerance-factors.js';
 
 /** A coupler between two buses: no impedance. `either` is judged both ways, open being the normal one. */
 export interface CouplerInput {
@@ -117,6 +118,8 @@ export interface NetworkState {
   capacitorsIn: number[];
   /** transformer that is out, or null */
   transformerOut: number | null;
+  /** of all capacitors that are in; absent where they are as their nameplates say */
+  tolerance?: ToleranceFactors;
 }
 
 /** Most states that are judged. */

@@ -94,6 +94,7 @@ export function settleSite(site: Site, record: LoadRecord | null): Settled {
   }
   if (site.recordedBank === undefined) defaults.note('default.recordedBank', 'recordedBank', {});
   if (!hasTransformer) defaults.note('supply.noTransformer', 'supply.transformers', {});
+  if ((site.network?.cables ?? []).length > 0) defaults.note('network.cables.steady', 'network.cables', {});
   const { measured } = settled.facts;
   const fitted = measured?.use === 'fit' ? fittedLoads(site, settled, measured) : null;
   if (fitted !== null) settled.loads = fitted.loads;

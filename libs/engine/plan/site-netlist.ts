@@ -82,14 +82,22 @@ function gravestClosing({ site, bank, levels, model }: NetworkScene): (Closing &
   return gravest;
 }
 
-function cornerWords({ faultLevelMva, capacitanceFactor, inductanceFactor, dampingKw, standing }: Corner): string {
+function cornerWords(corner: Corner): string {
+  const { faultLevelMva, capacitanceFactor, inductanceFactor, dampingKw, standing } = corner;
+  const { networkCapacitanceFactor: capacitance, networkInductanceFactor: inductance } = corner;
   const parts = [
     `fault level ${faultLevelMva} MVA`,
     `capacitance x ${capacitanceFactor}`,
     `inductance x ${inductanceFactor}`,
     `damping ${dampingKw} kW`,
   ];
-  return [...parts, ...(standing === undefined ? [] : [standing])].join(', ');
+  return [
+    ...parts,
+    ...(standing === undefined ? [] : [standing]),
+    ...(capacitance === undefined
+      ? []
+      : [`network's capacitors: capacitance x ${capacitance}, inductance x ${inductance}`]),
+  ].join(', ');
 }
 
 function stagesWords({ vector, standing }: Closing): string {

@@ -14,16 +14,17 @@ const DAY_S = 86_400;
  * @throws InputProblem naming the row of a date that does not exist
  */
 export function clockTimes(rows: StampedRows, order: DateOrder, room?: Float64Array): Float64Array {
-  const clock = room?.subarray(0, rows.count) ?? new Float64Array(rows.count);
+  const { count, dateKey, clockS } = rows;
+  const clock = room?.subarray(0, count) ?? new Float64Array(count);
   let known = -1;
   let dayS = 0;
-  for (let i = 0; i < rows.count; i++) {
-    const dateKey = rows.dateKey[i]!;
-    if (dateKey !== known) {
+  for (let i = 0; i < count; i++) {
+    const key = dateKey[i]!;
+    if (key !== known) {
       dayS = DAY_S * dayOf(rows, i, order);
-      known = dateKey;
+      known = key;
     }
-    clock[i] = dayS + rows.clockS[i]!;
+    clock[i] = dayS + clockS[i]!;
   }
   return clock;
 }

@@ -79,7 +79,8 @@ function ownMoments(utcS: Float64Array, offsetS: Int32Array): Moments {
 function zoneOver(zone: string, clock: Float64Array): ZoneTable {
   let fromS = Number.POSITIVE_INFINITY;
   let toS = Number.NEGATIVE_INFINITY;
-  for (const localS of clock) {
+  for (let i = 0; i < clock.length; i++) {
+    const localS = clock[i]!;
     if (localS < fromS) fromS = localS;
     if (localS > toS) toS = localS;
   }
