@@ -49,6 +49,7 @@ const LABELS: Readonly<Record<string, string>> = words({
   'devices.group[*].rippleOhm': 'reactance of a stage at the ripple frequency, above 0 where it blocks',
   'devices.greatestFaultKa': 'equipment fault current, not the fault level of resonance',
   'devices.peakFaultKa': 'peak of the equipment fault current',
+  'devices.shortTimeKa': 'thermal equivalent of the equipment fault current over 1 s',
   'devices.leastFaultKa': 'least fault current, two phases',
   'devices.instantaneousMinA': 'least instantaneous setting upstream',
   'devices.cabinetHeatW': 'heat of the cabinet, at most',
