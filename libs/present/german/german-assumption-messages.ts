@@ -70,6 +70,14 @@ export const GERMAN_ASSUMPTION_MESSAGES: Readonly<Record<string, Translation>> =
     'Bei den Ordnungen {orders} wurde nichts gemessen: Ihre Ströme sind wie angegeben.',
     'Auch sie messen oder mit den Datenblättern der Lasten vergleichen.',
   ),
+  'network.besideNotSimulated': said(
+    '{name} an {bus} wird mit jeder Zahl zugeschalteter Stufen beurteilt. Wie dort geschaltet wird, ist nicht simuliert: was es während der Aufzeichnung gab, bleibt in der Aufzeichnung.',
+    'Auch als Anlage des Standorts beurteilen, mit dieser unter den Anlagen des Netzes.',
+  ),
+  'network.cables.steady': said(
+    'Kabel behalten bei jeder Ordnung den Widerstand der Grundschwingung: ihr Skineffekt ist klein, und weniger Dämpfung ist die strenge Seite.',
+    'Nichts zu klären; ein warmes Kabel hat noch mehr Widerstand.',
+  ),
   'loads.distorting.none': said(
     'Es wurde erklärt, dass keine Last Oberschwingungen erzeugt.',
     'Den Standort begehen: Antriebe, Gleichrichter, Schweißgeräte, Beleuchtung.',
