@@ -70,6 +70,10 @@ export const GERMAN_ASSUMPTION_MESSAGES: Readonly<Record<string, Translation>> =
     'Bei den Ordnungen {orders} wurde nichts gemessen: Ihre Ströme sind wie angegeben.',
     'Auch sie messen oder mit den Datenblättern der Lasten vergleichen.',
   ),
+  'network.cables.steady': said(
+    'Kabel behalten bei jeder Ordnung ihren Widerstand der Grundschwingung: Ihr Skineffekt ist klein, und weniger Dämpfung ist das ungünstige Ende.',
+    'Nichts zu klären; der Widerstand eines warmen Kabels ist noch höher.',
+  ),
   'loads.distorting.none': said(
     'Es wurde erklärt, dass keine Last Oberschwingungen erzeugt.',
     'Den Standort begehen: Antriebe, Gleichrichter, Schweißgeräte, Beleuchtung.',
