@@ -124,7 +124,6 @@ export const GERMAN_DOCUMENT_TEXTS: Readonly<Record<string, string>> = {
   'page {0} of {1}': 'Seite {0} von {1}',
   'Site: see page 1': 'Standort: siehe Seite 1',
   'Power-factor correction for {0}': 'Blindleistungskompensation für {0}',
-  'Proposal {0}, revision {1}, {2}': 'Vorschlag {0}, Revision {1}, {2}',
   'the site’s bank': 'vorhandene Anlage',
   'the first': 'die erste',
   '{0} revisions in numbers': '{0} Revisionen in Zahlen',

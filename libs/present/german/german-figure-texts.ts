@@ -104,6 +104,7 @@ export const GERMAN_FIGURE_TEXTS: Readonly<Record<string, string>> = {
   'bill\u00a0{0}': 'Rechnung\u00a0{0}',
   'entry\u00a0{0}': 'Eintrag\u00a0{0}',
   ', order\u00a0{0}': ', Ordnung\u00a0{0}',
+  ', at {0}': ', an {0}',
   'all stages in': 'alle Stufen ein',
   'no peak with {0}': 'keine Überhöhung mit {0}',
   '{0}, the peak lies at order {1}': '{0}: die Überhöhung liegt bei Ordnung {1}',
