@@ -1,12 +1,22 @@
 // German papers, read as a reader gets them: with poppler's tools. What stands on a page is held against the catalogue, and
 // the printed arithmetic is worked again by mathjs, a general-purpose reader of formulas.
 import { beforeAll, describe, expect, it } from 'vitest';
-import { type Outcome, withRobustness } from '#libs/engine/index.js';
+import { estimateZone } from '#libs/contract/estimate-zone.js';
+import { zoneTable } from '#libs/contract/time-zone.js';
+import {
+  type EstimateOutcome,
+  type Outcome,
+  planEstimate,
+  reevaluateBank,
+  type Site,
+  type SiteThen,
+  withRobustness,
+} from '#libs/engine/index.js';
 import { GERMAN } from '#libs/present/german/german.js';
-import { putInWords } from '#libs/present/put-in-words.js';
+import { putEstimateInWords, putInWords } from '#libs/present/put-in-words.js';
 import { renderProposal } from '#libs/proposal/render-proposal.js';
 import { generatedCase } from '../support/generated-site.js';
-import { MADE_BANK, madeFrame, madeOutcome } from '../support/outcome.js';
+import { MADE_BANK, madeFrame, madeOutcome, madeRecord, madeSite } from '../support/outcome.js';
 import { readPdf, textOf, type PlacedWord, wordsOf } from '../support/pdf-text.js';
 import { printedWorkings, wrongWorkings } from '../support/printed-workings.js';
 import { runs } from '../support/soak.js';
@@ -15,6 +25,20 @@ import { runs } from '../support/soak.js';
 const ENGLISH =
   /^(the|and|of|with|is|not|are|to|by|from|without|which|each|given|level|stage|bank|record|month|years)$/i;
 
+const TARIFF: Site['tariff'] = {
+  name: 'Lieferung, erfunden',
+  clauses: [
+    { name: 'Grundpreis', kind: 'fixed', amountPerMonth: 140 },
+    { name: 'Arbeit', kind: 'energy', pricePerUnit: 0.13 },
+    { name: 'Blindarbeit', kind: 'kvarhBeyondRatio', freeRatio: 0.33, pricePerUnit: 0.006 },
+  ],
+};
+const PRICES: Site['prices'] = {
+  ...{ name: 'Preise, erfunden', invented: true, currency: 'EUR', perKvar: 9, perStage: 55, fixed: 850 },
+  reactors: [{ reactorPct: 7, perKvar: 11.5 }],
+  switches: [{ kind: 'contactor', perStage: 38, lifeSwitchings: 60_000 }],
+};
+
 /** Words by their letters alone, those of a text that a line parted by a hyphen put together again. */
 function wordsIn(text: string): string[] {
   const whole = text.normalize('NFC').replace(/(?<=\p{Ll})-\n(?=\p{Ll})/gu, '');
@@ -22,12 +46,12 @@ function wordsIn(text: string): string[] {
 }
 
 /** What somebody entered, and the names of the fields it was entered in. */
-function enteredIn({ site, result }: Outcome): string {
+function enteredIn({ site, result }: Outcome | EstimateOutcome): string {
   return JSON.stringify([site, result.assumptions.map(({ path }) => path)]);
 }
 
 /** What may stand on a German paper: the catalogue's words, and those of what was entered. */
-function vocabulary(outcome: Outcome): Set<string> {
+function vocabulary(outcome: Outcome | EstimateOutcome): Set<string> {
   const { texts, messages } = GERMAN;
   const said = Object.values(messages).flatMap(({ text, consequence, subject = '' }) => [text, consequence, subject]);
   const own = [
@@ -56,7 +80,25 @@ function outside({ width, height, words }: ReturnType<typeof wordsOf>[number]): 
     .map(({ text }) => text);
 }
 
-async function paperOf(outcome: Outcome, parts = {}): Promise<Uint8Array> {
+const NO_FAULTS = { strange: [], english: [], overlapping: [], outside: [] };
+
+/** What is wrong with the words of a German paper and with their places. */
+function faultsOf(bytes: Uint8Array, outcome: Outcome | EstimateOutcome): Record<keyof typeof NO_FAULTS, string[]> {
+  const known = vocabulary(outcome);
+  const found = wordsIn(textOf(bytes));
+  expect(found.length).toBeGreaterThan(1500);
+  const pages = wordsOf(bytes);
+  // a name that somebody entered may be longer than any line
+  const entered = enteredIn(outcome);
+  return {
+    strange: [...new Set(found.filter((word) => !known.has(word) && !entered.includes(word)))],
+    english: found.filter((word) => ENGLISH.test(word) && !entered.includes(word)),
+    overlapping: pages.flatMap(({ words }) => overlaps(words)),
+    outside: pages.flatMap(outside),
+  };
+}
+
+async function paperOf(outcome: Outcome | EstimateOutcome, parts = {}): Promise<Uint8Array> {
   return renderProposal(outcome, madeFrame({ language: 'de', preparedBy: 'R. Aldane', ...parts }));
 }
 
@@ -121,21 +163,38 @@ describe('German papers of generated sites', () => {
       const { parts, load } = generatedCase(number);
       const outcome = madeOutcome(parts, load);
       const bytes = await paperOf(outcome, number % 2 === 1 ? { paper: 'Letter' } : {});
-      const known = vocabulary(outcome);
-      const found = wordsIn(textOf(bytes));
-      expect(found.length).toBeGreaterThan(1500);
-      // a name that somebody entered may be longer than any line
-      const entered = enteredIn(outcome);
-      expect([...new Set(found.filter((word) => !known.has(word) && !entered.includes(word)))]).toEqual([]);
-      expect(found.filter((word) => ENGLISH.test(word) && !entered.includes(word))).toEqual([]);
-      const pages = wordsOf(bytes);
-      expect(pages.flatMap(({ words }) => overlaps(words))).toEqual([]);
-      expect(pages.flatMap(outside)).toEqual([]);
+      expect(faultsOf(bytes, outcome)).toEqual(NO_FAULTS);
       const printed = printedWorkings(bytes, 'de');
       expect(printed.length).toBeGreaterThan(10);
       expect(wrongWorkings(printed)).toEqual([]);
     },
   );
+
+  it('hold none where the plan is an estimate', async () => {
+    const bills = ['01', '02', '03'].map((month) => ({
+      ...{ month: `2025-${month}`, activeKwh: 100_000, laggingKvarh: 82_000, maxKw: 320 },
+    }));
+    const equipment = [{ name: 'Motoren', count: 6, ratedKw: 37, efficiencyPct: 92, powerFactor: 0.78 }];
+    const site = madeSite({ estimate: { bills, equipment } });
+    const planned = planEstimate(site, estimateZone(site));
+    const outcome = { ...planned, result: putEstimateInWords(planned.result) };
+    expect(faultsOf(await paperOf(outcome), outcome)).toEqual(NO_FAULTS);
+  });
+
+  it('hold none where a bank over a limit is judged again, with money', async () => {
+    const then = (stages: number, parts: Partial<Site>): SiteThen => {
+      const bank = { stages: [{ count: stages, ratedKvar: 40, ratedV: 440 }], installed: true };
+      const site = madeSite({ bank, tariff: TARIFF, prices: PRICES, ...parts });
+      const record = madeRecord({ days: 40 });
+      return { site, record, zone: zoneTable(site.timeZone, record.firstS, record.endS) };
+    };
+    const { reevaluation, after } = reevaluateBank(then(6, {}), then(4, { asOf: '2026-03-01' }));
+    expect(reevaluation.tonight).not.toBeNull();
+    const outcome = { ...after, result: putInWords(after.result) };
+    const bytes = await paperOf(outcome, { reevaluation, paper: 'Letter' });
+    expect(textOf(bytes)).toContain('Eine Elektrofachkraft schaltet sie ab');
+    expect(faultsOf(bytes, outcome)).toEqual(NO_FAULTS);
+  });
 
   it('are told from English ones by their words (control)', async () => {
     const { parts, load } = generatedCase(0);

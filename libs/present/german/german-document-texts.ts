@@ -19,7 +19,7 @@ export const GERMAN_DOCUMENT_TEXTS: Readonly<Record<string, string>> = {
   'They stay out until {0} {1} been mended and the bank has been judged again.':
     'Sie bleiben abgeschaltet, bis Folgendes behoben {1}: {0}, und bis die Anlage neu beurteilt ist.',
   has: 'ist',
-  have: 'sind',
+  have: 'ist',
   'With {0} out nothing is over a limit, though near one: a second best, to be accepted by whoever answers for the installation.':
     'Ist Folgendes abgeschaltet, {0}, so liegt nichts über einem Grenzwert, wenn auch nahe daran: die zweitbeste Lösung, anzunehmen von der für die Anlage verantwortlichen Person.',
   'No stage may stay in.': 'Keine Stufe darf zugeschaltet bleiben.',

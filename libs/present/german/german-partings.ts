@@ -148,6 +148,7 @@ export const GERMAN_PARTINGS: readonly string[] = [
   'schalt|folge',
   'schalt|gerät',
   'unter|grenze',
+  'be|messung',
   'un|günstig',
   'ver|drosselt',
   'vor|gefunden',
