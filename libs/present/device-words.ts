@@ -214,7 +214,7 @@ export function deviceName(device: string): string {
  * @returns the word; itself where the table holds none
  */
 export function enteredWords(value: string): string {
-  return ENTERED[value] ?? value;
+  return ENTERED[value] ?? engineName(value);
 }
 
 const OWN_UNITS: Partial<Record<DeviceName, { value: string }>> = {

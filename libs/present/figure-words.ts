@@ -1,6 +1,7 @@
 import type { Duty, Figure } from '#libs/engine/index.js';
 import { engineName } from './engine-name.js';
 import { formatNumber, GAP, inPoints, MINUS } from './format-number.js';
+import { groupName } from './group-name.js';
 import { say, words } from './language.js';
 import { plainName } from './plain-name.js';
 
@@ -91,12 +92,12 @@ export function labelOf(id: string, duties: readonly Duty[]): string {
   }
   const label = LABELS[id.replace(/\[\d+\]/, '[*]')];
   if (label === undefined) return id;
-  return place === null ? label : `${label}, ${placeWord(id)}${GAP}${at + 1}`;
+  return place === null ? label : `${label}, ${placeName(id, at)}`;
 }
 
-function placeWord(id: string): string {
-  if (id.startsWith('estimate.months')) return say`bill`;
-  return id.startsWith('estimate.equipment') ? say`entry` : say`group`;
+function placeName(id: string, at: number): string {
+  if (id.startsWith('estimate.months')) return say`bill\u00a0${at + 1}`;
+  return id.startsWith('estimate.equipment') ? say`entry\u00a0${at + 1}` : groupName(at);
 }
 
 /**

@@ -71,12 +71,12 @@ export const GERMAN_ASSUMPTION_MESSAGES: Readonly<Record<string, Translation>> =
     'Auch sie messen oder mit den Datenblättern der Lasten vergleichen.',
   ),
   'network.besideNotSimulated': said(
-    '{name} an {bus} wird mit jeder Zahl zugeschalteter Stufen beurteilt. Wie dort geschaltet wird, ist nicht simuliert: was es während der Aufzeichnung gab, bleibt in der Aufzeichnung.',
+    '{name} an {bus} ist mit jeder Zahl seiner Stufen beurteilt, die zugeschaltet sein können. Wie es geschaltet wird, ist nicht simuliert: Was es während der Aufzeichnung abgab, bleibt im Lastgang.',
     'Auch als Anlage des Standorts beurteilen, mit dieser unter den Anlagen des Netzes.',
   ),
   'network.cables.steady': said(
-    'Kabel behalten bei jeder Ordnung den Widerstand der Grundschwingung: ihr Skineffekt ist klein, und weniger Dämpfung ist die strenge Seite.',
-    'Nichts zu klären; ein warmes Kabel hat noch mehr Widerstand.',
+    'Kabel behalten bei jeder Ordnung ihren Widerstand der Grundschwingung: Ihr Skineffekt ist klein, und weniger Dämpfung ist das ungünstige Ende.',
+    'Nichts zu klären; der Widerstand eines warmen Kabels ist noch höher.',
   ),
   'loads.distorting.none': said(
     'Es wurde erklärt, dass keine Last Oberschwingungen erzeugt.',
