@@ -46,7 +46,8 @@ test('a changed source is built before the program runs, data beside it stands b
   expect(await run()).toMatchObject({ stdout: 'second\n', code: 0 });
   expect(existsSync(join(root, 'dist/libs/engine/word.js'))).toBe(false);
   expect(existsSync(join(root, 'dist/apps/cli/demo.csv'))).toBe(true);
-});
+  // a build, on a machine that may be busy
+}, 60_000);
 
 test('a source that does not compile ends in 1 with nothing on stdout, and is not taken for built afterwards', async () => {
   write('libs/engine/phrase.ts', "export const word: number = 'third';\n");
