@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import { formatNumber, formatQuantity, printedArithmetic } from './format-number.js';
-import { type Catalogue, inLanguage, say, spokenCatalogue, words } from './language.js';
+import { type Catalogue, hyphenParts, inLanguage, say, spokenCatalogue, words } from './language.js';
 
 /** Invented for the test. */
 const TURNED: Catalogue = {
@@ -8,6 +8,7 @@ const TURNED: Catalogue = {
   decimalMark: ',',
   texts: { '{0} of {1} levels': 'von {1} Stufen {0}', head: 'Kopf', 'a line and the next': 'zwei Zeilen' },
   messages: {},
+  partings: ['kopf|zeile'],
 };
 
 const TABLE = words({ rows: [{ head: 'head', share: 2 }, { head: 'unknown' }], align: 'right' });
@@ -50,6 +51,14 @@ describe('words in the language in force', () => {
 
   it('refuse to be awaited, since what follows would be in another language', () => {
     expect(() => inLanguage(TURNED, async () => counted(2, 9))).toThrow('not awaited');
+  });
+});
+
+describe('the places where a word may be parted', () => {
+  it('are the language’s, whatever stands behind the word; English has none', () => {
+    expect(inLanguage(TURNED, () => hyphenParts('Kopfzeilen,'))).toEqual(['Kopf', 'zeilen,']);
+    expect(inLanguage(TURNED, () => hyphenParts('Kopf'))).toEqual(['Kopf']);
+    expect(hyphenParts('Kopfzeilen,')).toEqual(['Kopfzeilen,']);
   });
 });
 

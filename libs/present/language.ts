@@ -7,6 +7,8 @@ export interface Catalogue {
   texts: Readonly<Record<string, string>>;
   /** by remark code, in place of the English message */
   messages: Readonly<Record<string, Translation>>;
+  /** words of several, small letters, with the places where a narrow line may part them */
+  partings: readonly string[];
 }
 
 /** A message of the catalogue in another language; its level does not depend on words. */
@@ -40,6 +42,20 @@ export function inLanguage<T>(catalogue: Catalogue | null, speak: () => T): T {
 /** The catalogue in force, null while English is spoken. */
 export function spokenCatalogue(): Catalogue | null {
   return spoken;
+}
+
+/**
+ * Where a word may be parted by a hyphen in the language in force.
+ * @param word letters alone, or with signs behind them
+ * @returns its parts in their order, one where it has no such place
+ */
+export function hyphenParts(word: string): string[] {
+  const small = word.toLowerCase();
+  const found = spoken?.partings.find((one) => small.startsWith(one.replaceAll('|', '')));
+  if (found === undefined) return [word];
+  let from = 0;
+  const ends = found.split('|').map((part) => (from += part.length));
+  return ends.map((end, at) => word.slice(ends[at - 1] ?? 0, at === ends.length - 1 ? word.length : end));
 }
 
 /** A template's own texts and the key it stands under, by the place in the source that holds it. */

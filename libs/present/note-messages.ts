@@ -17,7 +17,7 @@ export const NOTE_MESSAGES: Messages = {
   'rows-before-header': told('{rows:row stands|rows stand} before the header and were left out.'),
   'header-repeated': told('The header is repeated in {rows:row|rows}, which were left out.'),
   'text-rows-left-out': told(
-    '{rows:line|lines} of text among the data {rows:was|were} left out, the first in row {first}.',
+    '{rows:line of text was|lines of text were} left out among the data, the first in row {first}.',
   ),
   'total-rows-left-out': told('{rows:row of totals was|rows of totals were} left out.'),
   'decimal-mark-settled': told('The decimal mark is “{mark}”; every other reading fails.'),

@@ -1,6 +1,6 @@
 import type { Outcome } from '#libs/engine/index.js';
 import type { Chart } from './chart.js';
-import { formatApart, formatNumber } from './format-number.js';
+import { formatApart, formatFixed, formatNumber } from './format-number.js';
 import { say } from './language.js';
 import { formatMonth } from './local-stamp.js';
 import { monthAxis, pairMarks } from './month-pairs.js';
@@ -68,7 +68,7 @@ export function factorAxis(least: number): Chart['y'] {
   const from = Math.max(0, Math.floor(least / step - 0.05) * step);
   const ticks = [];
   for (let n = Math.round(from / step); n * step <= 1 + 1e-9; n++) {
-    ticks.push({ at: n * step, text: (n * step).toFixed(2) });
+    ticks.push({ at: n * step, text: formatFixed(n * step, 2) });
   }
   return { label: say`power factor`, unit: '', scale: 'linear', from, to: 1, ticks };
 }

@@ -94,7 +94,8 @@ function complete(part: string, remark: Remark): boolean {
 
 /** Lengths of time read better in minutes; a value held against its limit keeps apart from it. */
 function valueWords(name: string, value: number | string, remark: Remark): string {
-  if (typeof value === 'string') return textWords(name, value);
+  if (typeof value === 'string')
+    return name === 'columns' && remark.code === 'file-read-as' ? columnRoles(value) : textWords(name, value);
   const unit = name === 'value' || name === 'limit' ? (remark.unit ?? '') : unitOfName(name);
   if (unit === 's') return seconds(value);
   const { value: found, limit } = remark.values;
@@ -103,6 +104,12 @@ function valueWords(name: string, value: number | string, remark: Remark): strin
     return `${name === 'value' ? apart.value : apart.limit}${GAP}${unit}`;
   }
   return formatQuantity(value, unit, 'given');
+}
+
+/** What each column was read as, then what it calls itself. */
+function columnRoles(columns: string): string {
+  const said = columns.split('; ').map((column) => column.replace(/^[A-Za-z]+/, (role) => engineName(spaced(role))));
+  return plainName(said.join('; '));
 }
 
 /** Values that a user or a file named; they are never translated. */

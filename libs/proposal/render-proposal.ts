@@ -33,7 +33,6 @@ import { drawAccepted, drawSignatures } from './section-signatures.js';
 import { drawSiteActions } from './section-site-actions.js';
 import { drawStages } from './section-stages.js';
 import { drawVerification } from './section-verification.js';
-import { stateWords } from './state-words.js';
 
 export type { ProposalFrame } from './proposal-frame.js';
 
@@ -111,7 +110,8 @@ function infoOf(outcome: Outcome | EstimateOutcome, frame: ProposalFrame): PDFKi
   const when = new Date(contentEndS(outcome) * 1000);
   return {
     Title: say`Power-factor correction for ${plainName(outcome.site.name)}`,
-    Subject: say`Proposal ${frame.number}, revision ${frame.revision}, ${stateWords(frame.state)}`,
+    // in English whatever the paper is in: by this line a register finds the paper that a file says it is
+    Subject: `Proposal ${frame.number}, revision ${frame.revision}, ${frame.state}`,
     Keywords: frame.contentHash,
     Creator: `Varwright engine ${frame.engineVersion}`,
     Producer: `Varwright engine ${frame.engineVersion}`,

@@ -7,6 +7,7 @@ import {
   siteCorners,
 } from '#libs/engine/index.js';
 import { estimateSpan } from '#libs/present/estimate-words.js';
+import { engineName } from '#libs/present/engine-name.js';
 import { countWord } from '#libs/present/findings.js';
 import { formatNumber, formatQuantity, formatRange } from '#libs/present/format-number.js';
 import { say } from '#libs/present/language.js';
@@ -28,7 +29,7 @@ export function drawValidity(paper: Paper, outcome: Outcome | EstimateOutcome): 
   ]);
   if (outcome.site.rules === 'iec' && outcome.bank.groups.length > 0) {
     const times = OVERVOLTAGE_DURATIONS.map(
-      ({ ratio, duration }) => `${formatNumber(ratio, 'given')} ${duration}`,
+      ({ ratio, duration }) => `${formatNumber(ratio, 'given')} ${engineName(duration)}`,
     ).join('; ');
     paper.paragraph([say`A capacitor carries, as a multiple of its rated voltage: ${times} (IEC 60831-1).`]);
   }

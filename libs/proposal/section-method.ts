@@ -81,10 +81,14 @@ function columns(first: string): Column[] {
 
 /** "Q_N in kvar, U_N in V"; a pure number goes without saying. */
 function unitWords({ inputs }: Figure): string {
-  const named = inputs
-    .filter(({ unit }) => unit !== '')
-    .map(({ symbol, unit }) => say`${symbol}\u00a0in\u00a0${engineName(unit)}`);
+  const named = inputs.filter(({ unit }) => unit !== '').map(({ symbol, unit }) => symbolIn(symbol, unit));
   return named.length === 0 ? '' : `${named.join(', ')}.`;
+}
+
+/** Years and months are units in words. */
+function symbolIn(symbol: string, unit: string): string {
+  if (unit === 'years') return say`${symbol}\u00a0in\u00a0years`;
+  return unit === 'months' ? say`${symbol}\u00a0in\u00a0months` : say`${symbol}\u00a0in\u00a0${unit}`;
 }
 
 function formulaCell({ formula, working }: { formula: string; working: string }): Piece[] {

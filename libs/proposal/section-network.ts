@@ -190,7 +190,7 @@ function drawLevels(paper: Paper, outcome: BankOutcome): void {
   paper.heading('9.6', say`Levels, nominal and worst case`, { level: 3 });
   const rows = shown.map((level) => [
     formatNumber(level.levelKvar),
-    level.case,
+    engineName(level.case),
     formatQuantity(level.parallelOrderH, ''),
     formatQuantity(level.peakOhm, ''),
     formatNumber(level.voltageDistortionPct),

@@ -1,6 +1,8 @@
 import fc from 'fast-check';
 import PDFDocument from 'pdfkit';
 import { describe, expect, it } from 'vitest';
+import { GERMAN } from '#libs/present/german/german.js';
+import { inLanguage } from '#libs/present/language.js';
 import { BODY, NEW_LINE, Typesetter } from './typesetter.js';
 
 const SEED = 20_260_131;
@@ -25,6 +27,19 @@ describe('breaking text into lines', () => {
     const lines = textOfLines(type.wrap(['Zweigniederlassung-Ybbs/Donau'], BODY, 96));
     expect(lines[0]).toBe('Zweigniederlassung-');
     expect(lines.join('')).toBe('Zweigniederlassung-Ybbs/Donau');
+  });
+
+  it('parts a compound by a hyphen where the language has a place for it, else as ever', () => {
+    const parted = (width: number) =>
+      inLanguage(GERMAN, () => textOfLines(type.wrap(['Verdrosselungsgrad,'], BODY, width)));
+    expect(parted(200)).toEqual(['Verdrosselungsgrad,']);
+    expect(parted(74)).toEqual(['Verdrosselungs-', 'grad,']);
+    expect(parted(58)).toEqual(['Ver-', 'drosselungs-', 'grad,']);
+    for (const width of [58, 74]) {
+      const lines = inLanguage(GERMAN, () => type.wrap(['Verdrosselungsgrad,'], BODY, width));
+      for (const line of lines) expect(line.width).toBeLessThanOrEqual(width);
+    }
+    expect(textOfLines(type.wrap(['Verdrosselungsgrad,'], BODY, 74)).join('')).toBe('Verdrosselungsgrad,');
   });
 
   it('loses no letter and passes no width, whatever the text', () => {

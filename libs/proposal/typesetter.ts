@@ -1,4 +1,5 @@
 import type {} from 'pdfkit';
+import { hyphenParts } from '#libs/present/language.js';
 import { printable } from '#libs/present/plain-name.js';
 import { type Run, shippedFonts, splitRuns, type Weight } from './fonts.js';
 import { INK } from './ink.js';
@@ -35,8 +36,14 @@ export interface Line {
 
 /** Right-to-left scripts are shaped as one run, so that their words keep their order. */
 const RIGHT_TO_LEFT = /[\u0590-\u08ff\ufb1d-\ufdff\ufe70-\ufefc]/u;
-/** A word too long for its line breaks after one of these, else anywhere. */
+/** A word too long for its line breaks after one of these, else where the language parts it, else anywhere. */
 const SOFT_BREAK = /(?<=[-/_.,;:@+&])/u;
+
+/** Part of a word, and the hyphen that a line takes where it ends behind it. */
+interface WordPart {
+  part: Line;
+  hyphen: Line | null;
+}
 
 /** Measures, breaks and draws text on a document; the only place that calls pdfkit's text. */
 export class Typesetter {
@@ -154,24 +161,33 @@ export class Typesetter {
   }
 
   private breakWord(word: Line, width: number): Line[] {
-    const parts: Line[] = [{ segments: [], width: 0 }];
-    for (const segment of word.segments) {
-      for (const text of this.pieceable(segment, width)) {
-        const part = this.segment({ text, font: segment.font }, segment.style);
-        const last = parts.at(-1)!;
-        if (last.segments.length > 0 && last.width + part.width > width) {
-          parts.push({ segments: [part], width: part.width });
-        } else append(last, { segments: [part], width: part.width }, 0);
-      }
+    const lines: Line[] = [{ segments: [], width: 0 }];
+    let before: Line | null = null;
+    for (const { part, hyphen } of word.segments.flatMap((segment) => this.parts(segment, width))) {
+      const last = lines.at(-1)!;
+      if (last.segments.length > 0 && last.width + part.width + (hyphen?.width ?? 0) > width) {
+        if (before !== null) append(last, before, 0);
+        lines.push(part);
+      } else append(last, part, 0);
+      before = hyphen;
     }
-    return parts;
+    return lines;
   }
 
   /** Parts of a word that may part company; letter by letter where even a part is too long. */
-  private pieceable({ text, font, style }: Segment, width: number): string[] {
+  private parts({ text, font, style }: Segment, width: number): WordPart[] {
+    const lineOf = (part: string): Line => {
+      const segment = this.segment({ text: part, font }, style);
+      return { segments: [segment], width: segment.width };
+    };
     return text.split(SOFT_BREAK).flatMap((chunk) => {
-      const fits = this.measure(chunk, font, style) <= width;
-      return fits ? [chunk] : (chunk.match(/\P{M}\p{M}*/gsu) ?? []);
+      const all = hyphenParts(chunk);
+      const hyphened = all.map((part, at) => ({
+        part: lineOf(part),
+        hyphen: at < all.length - 1 ? lineOf('-') : null,
+      }));
+      if (hyphened.every(({ part, hyphen }) => part.width + (hyphen?.width ?? 0) <= width)) return hyphened;
+      return (chunk.match(/\P{M}\p{M}*/gsu) ?? []).map((letter) => ({ part: lineOf(letter), hyphen: null }));
     });
   }
 

@@ -45,6 +45,12 @@ describe('a bank judged again over HTTP', () => {
     for (const sentence of [...body.tonight, ...body.since]) expect(squeezed(text)).toContain(squeezed(sentence));
     expect(squeezed(text)).toContain(squeezed(`Judged again beside ${body.revision.number}, revision 1.`));
     expect(Buffer.compare((await paper()).body, pdf)).toBe(0);
+    const german = await server.ask('GET', `${site}/revisions/1/reevaluation/proposal.pdf?language=de`);
+    expect(textOf(german.body).replace(/\s+/g, ' ')).toContain(
+      `Neu beurteilt neben ${body.revision.number}, Revision 1.`,
+    );
+    const other = await server.ask('GET', `${site}/revisions/1/reevaluation/proposal.pdf?language=tlh`);
+    expect([other.status, other.body.problems[0].path]).toEqual([422, 'language']);
     expect((await server.ask('GET', `${site}/revisions`)).body.revisions).toHaveLength(1);
   });
 

@@ -3,6 +3,7 @@ import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { dataSourceFor, readAddress } from '#libs/store/data-source.js';
 import { type TestDatabase, usualDatabases } from '../support/databases.js';
 import { COMMISSIONED } from '../support/made-review.js';
+import { textOf } from '../support/pdf-text.js';
 import { savedAfterwards } from '../support/sign-afterwards.js';
 import { startServer, type TestServer } from '../support/test-server.js';
 import { meterFile, siteFile } from './site-builder.js';
@@ -237,6 +238,38 @@ for (const { name, available, create } of usualDatabases) {
         'draft',
         back.body.returned.reason,
       ]);
+    });
+
+    it('is approved in the language it was planned in, found by its name where it was altered', async () => {
+      siteId = (await server.ask('POST', '/api/sites', site('Birkenwerk'))).body.id;
+      await server.upload(siteId, meterFile(14));
+      const asked = { author: 'R. Aldane', language: 'de' };
+      expect((await server.ask('POST', `/api/sites/${siteId}/plans?wait=60`, asked)).status).toBe(201);
+      expect(textOf((await server.ask('GET', at(1, '/proposal.pdf'))).body)).toContain('Entwurf, nicht geprüft');
+      await settle(1);
+      const { findings } = await review(1);
+      expect((await act(1, 'approve', SIGNED)).status).toBe(200);
+      const paper = await paperOf(1);
+      const text = textOf(paper).replace(/\s+/g, ' ');
+      for (const said of [
+        'freigegeben',
+        'In der Funktion Prüfung und Freigabe',
+        'Ich stehe für die Prüfung ein.',
+        'von Hand',
+      ]) {
+        expect(text).toContain(said);
+      }
+      expect(text.match(/Angenommen von/g)).toHaveLength(findings.length);
+      for (const { what } of findings) expect(text).not.toContain(what);
+      expect(await verify(paper)).toMatchObject({ standing: 'approved' });
+      const changed = Buffer.from(paper);
+      changed[changed.length >> 1]! ^= 1;
+      expect(await verify(changed)).toMatchObject({
+        standing: 'altered',
+        text: expect.stringMatching(/P-\d+, revision 1/),
+      });
+      const unknown = await server.ask('POST', `/api/sites/${siteId}/plans`, { language: 'fr' });
+      expect([unknown.status, unknown.body.problems[0].path]).toEqual([422, 'language']);
     });
   });
 }

@@ -5,6 +5,11 @@ import type { Catalogue, Translation } from '#libs/present/language.js';
 import { MESSAGES } from '#libs/present/message-catalogue.js';
 import { type SourceTexts, sourceTexts, textsInto } from '../support/source-texts.js';
 
+/** Signs and values alone read the same in any language; quotation marks differ. */
+function hasWords(key: string): boolean {
+  return /[\p{L}“]/u.test(key.replace(/\{\w+\}/g, ''));
+}
+
 /** Names of the values in a text, in order of the alphabet. */
 function places(text: string): string[] {
   return [...text.matchAll(/\{(\w+)(?:[:}])/g)].map(([, name]) => name!).sort();
@@ -31,7 +36,7 @@ function wrongTexts(
 ): { missing: string[]; unused: string[]; unlike: string[] } {
   const keys = [...texts.keys()];
   return {
-    missing: keys.filter((key) => german[key] === undefined),
+    missing: keys.filter((key) => hasWords(key) && german[key] === undefined),
     unused: Object.keys(german).filter((key) => !texts.has(key)),
     unlike: keys.filter((key) => german[key] !== undefined && unlike(key, german[key])),
   };

@@ -12,24 +12,40 @@ const LINE_PT = 2;
 /** The narrow column at the right that holds what a working gives [pt]. */
 const GIVES_PT = 84;
 
+/** How the columns of workings are headed. */
+const HEADS = { en: { formula: 'formula,', gives: 'gives' }, de: { formula: 'Formel,', gives: 'ergibt' } } as const;
+
 /**
  * Reads every working off a paper: its words and where they stand are all that is known.
  * @param bytes of the paper
- * @returns workings in their order
+ * @param language it is written in; German has the decimal comma, and semicolons between arguments
+ * @returns workings in their order, with decimal points
  */
-export function printedWorkings(bytes: Uint8Array): PrintedWorking[] {
-  return wordsOf(bytes).flatMap(({ words }) => {
-    const heads = words.filter(({ text }) => text === 'formula,');
-    return heads.flatMap((head) => tableBelow(words, head));
+export function printedWorkings(bytes: Uint8Array, language: keyof typeof HEADS = 'en'): PrintedWorking[] {
+  const found = wordsOf(bytes).flatMap(({ words }) => {
+    const heads = words.filter(({ text }) => text === HEADS[language].formula);
+    return heads.flatMap((head) => tableBelow(words, head, HEADS[language]));
   });
+  if (language === 'en') return found;
+  return found.map(({ working, gives }) => ({ working: withPoints(working), gives: withPoints(gives) }));
 }
 
-function tableBelow(words: readonly PlacedWord[], head: PlacedWord): PrintedWorking[] {
-  const gives = words.find(({ text, yMin }) => text === 'gives' && Math.abs(yMin - head.yMin) < LINE_PT)!;
+function withPoints(text: string): string {
+  return text.replace(/(?<=\d),(?=\d)/g, '.').replaceAll(';', ',');
+}
+
+function tableBelow(
+  words: readonly PlacedWord[],
+  head: PlacedWord,
+  named: { formula: string; gives: string },
+): PrintedWorking[] {
+  const gives = words.find(({ text, yMin }) => text === named.gives && Math.abs(yMin - head.yMin) < LINE_PT)!;
   const below = words.filter(({ yMin }) => yMin > head.yMax);
   const foot = Math.min(
     Infinity,
-    ...below.filter(({ text, xMin }) => text === 'formula,' && Math.abs(xMin - head.xMin) < 1).map(({ yMin }) => yMin),
+    ...below
+      .filter(({ text, xMin }) => text === named.formula && Math.abs(xMin - head.xMin) < 1)
+      .map(({ yMin }) => yMin),
   );
   const inside = below.filter(({ yMin }) => yMin < foot);
   const values = linesOf(inside.filter(({ xMin, xMax }) => xMin > gives.xMax - GIVES_PT && xMax <= gives.xMax + 1));
@@ -49,7 +65,7 @@ function tableBelow(words: readonly PlacedWord[], head: PlacedWord): PrintedWork
 
 /** What follows the table on its last page is prose. */
 function arithmeticOf(text: string): string {
-  return /^(?:[\d.+−·/^√(),π\s]|ln|max|min)+/u.exec(text)?.[0].trim() ?? '';
+  return /^(?:[\d.+−·/^√(),;π\s]|ln|max|min)+/u.exec(text)?.[0].trim() ?? '';
 }
 
 function linesOf(words: readonly PlacedWord[]): { y: number; text: string }[] {

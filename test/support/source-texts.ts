@@ -12,7 +12,7 @@ export type SourceTexts = Map<string, string[]>;
 
 /**
  * Every text that the source of papers looks up in a catalogue: the templates of say`…` and the texts of words(…).
- * @returns keys as a catalogue has them, with the files they stand in; texts without a letter are left out
+ * @returns keys as a catalogue has them, with the files they stand in
  */
 export function sourceTexts(): SourceTexts {
   const found: SourceTexts = new Map();
@@ -31,7 +31,7 @@ export function sourceTexts(): SourceTexts {
  */
 export function textsInto(found: SourceTexts, file: string, source: string): void {
   const add = (key: string) => {
-    if (hasWords(key)) found.set(key, [...(found.get(key) ?? []), file]);
+    found.set(key, [...(found.get(key) ?? []), file]);
   };
   const visit = (node: ts.Node): void => {
     if (ts.isTaggedTemplateExpression(node) && node.tag.getText() === 'say') add(keyOf(node.template));
@@ -41,11 +41,6 @@ export function textsInto(found: SourceTexts, file: string, source: string): voi
     ts.forEachChild(node, visit);
   };
   visit(ts.createSourceFile(file, source, ts.ScriptTarget.Latest, true));
-}
-
-/** A text is looked up in vain where nothing but values and signs stands in it; quotation marks differ by language. */
-function hasWords(key: string): boolean {
-  return /[\p{L}“]/u.test(key.replace(/\{\w+\}/g, ''));
 }
 
 function keyOf(template: ts.TemplateLiteral): string {

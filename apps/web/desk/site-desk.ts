@@ -3,6 +3,7 @@ import type { Station } from '../address.js';
 import { ask, NoConnection, Refused } from '../api/ask.js';
 import type { RecordShown, ReviewShown, RevisionHeadShown, RevisionShown, SiteShown } from '../api/shown.js';
 import { withValueAt } from '../field/document-path.js';
+import { paperAsked } from '../proposal/paper-language.js';
 import { clockNow } from './clock-now.js';
 import { InputRefused } from './desk-link.js';
 import { type DeskState, isChanged, NOTHING_YET, staleFrom, studiedDocument } from './desk-state.js';
@@ -117,11 +118,8 @@ export class SiteDesk {
     this.#set({ saving: true, problems: [], fault: null });
     try {
       if (isChanged(this.#state)) await this.#save(kind);
-      const way = kind === 'plan' ? 'plans' : 'assessments';
-      const { body } = await ask<RevisionShown | { id: string }>(`${this.#path()}/${way}`, {
-        method: 'POST',
-        json: {},
-      });
+      const path = `${this.#path()}/${kind === 'plan' ? 'plans' : 'assessments'}`;
+      const { body } = await ask<RevisionShown | { id: string }>(path, { method: 'POST', json: paperAsked() });
       this.#set({ offlineSince: null });
       if ('contentHash' in body) await this.#kept();
       else this.#follow(body.id);

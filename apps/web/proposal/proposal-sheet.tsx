@@ -10,6 +10,7 @@ import { VerdictWords } from '../draw/verdict-mark.js';
 import { valueAt } from '../field/document-path.js';
 import { Headline } from '../working/headline.js';
 import { FindingsList } from './findings-list.js';
+import { LanguageChoice } from './language-choice.js';
 import { ReviewState } from './review-state.js';
 
 /** The paper: preview, download, what changed since the last one. */
@@ -25,6 +26,7 @@ export function ProposalSheet() {
           A proposal is made with each plan.{' '}
           {canPlan ? null : 'A meter record, or bills or equipment, are needed first.'}
         </p>
+        {!canPlan ? null : <LanguageChoice />}
         {!canPlan ? null : (
           <p className="row gap">
             <button
@@ -93,6 +95,7 @@ function KeptPaper({ kept }: { kept: RevisionShown }) {
       <section className="section" aria-labelledby="papers">
         <h2 id="papers">Every revision is kept</h2>
         <Revisions revisions={revisions} />
+        <LanguageChoice />
         <p className="row gap">
           <a href={reevaluationAddress(kept.siteId)}>Judge the bank again, beside a revision</a>
         </p>

@@ -70,6 +70,14 @@ export const GERMAN_ASSUMPTION_MESSAGES: Readonly<Record<string, Translation>> =
     'Bei den Ordnungen {orders} wurde nichts gemessen: Ihre Ströme sind wie angegeben.',
     'Auch sie messen oder mit den Datenblättern der Lasten vergleichen.',
   ),
+  'network.besideNotSimulated': said(
+    '{name} an {bus} ist mit jeder Zahl seiner Stufen beurteilt, die zugeschaltet sein können. Wie es geschaltet wird, ist nicht simuliert: Was es während der Aufzeichnung abgab, bleibt im Lastgang.',
+    'Auch als Anlage des Standorts beurteilen, mit dieser unter den Anlagen des Netzes.',
+  ),
+  'network.cables.steady': said(
+    'Kabel behalten bei jeder Ordnung ihren Widerstand der Grundschwingung: Ihr Skineffekt ist klein, und weniger Dämpfung ist das ungünstige Ende.',
+    'Nichts zu klären; der Widerstand eines warmen Kabels ist noch höher.',
+  ),
   'loads.distorting.none': said(
     'Es wurde erklärt, dass keine Last Oberschwingungen erzeugt.',
     'Den Standort begehen: Antriebe, Gleichrichter, Schweißgeräte, Beleuchtung.',

@@ -55,7 +55,6 @@ export const GERMAN_BASIS_TEXTS: Readonly<Record<string, string>> = {
   'only where a repair was asked for': 'nur, wo eine Ergänzung verlangt war',
   'repeats dropped': 'verworfene Wiederholungen',
   'identical rows': 'gleiche Zeilen',
-  imported: 'bezogen',
   'never taken off the lagging': 'nie von induktiv abgezogen',
   'power factor, lagging only': 'Leistungsfaktor, nur induktiv',
   'power factor, net': 'Leistungsfaktor, netto',
@@ -92,7 +91,7 @@ export const GERMAN_BASIS_TEXTS: Readonly<Record<string, string>> = {
   'needed, at most': 'benötigt, max.',
   'needed, 99 %': 'benötigt, 99 %',
   'set point': 'Sollwert',
-  'lowest month after': 'schwächster Monat nachher',
+  'lowest month after': 'Monatsminimum nachher',
   'in target': 'im Zielwert',
   'resonance, all in': 'Resonanz, alle ein',
   'order\u00a0{0}': 'Ordnung\u00a0{0}',
@@ -158,8 +157,12 @@ export const GERMAN_BASIS_TEXTS: Readonly<Record<string, string>> = {
   '{0} nominal, at most {1}': '{0} Nennwert, höchstens {1}',
   'damping load': 'dämpfende Last',
   tolerances: 'Toleranzen',
+  '; the network’s own capacitors as their nameplates say and at the same ends, all of them alike, whatever the bank’s':
+    '; Kondensatoren des Netzes nach Leistungsschild und an denselben Enden, alle gleich, unabhängig von der Anlage',
   'capacitance 0.95 to 1.10 and inductance 0.97 to 1.03 of the nameplate, all stages alike':
     'Kapazität 0,95 bis 1,10 und Induktivität 0,97 bis 1,03 des Leistungsschilds, alle Stufen gleich',
+  '; the network’s own capacitors as their nameplates say and at the same ends, all of them alike, whatever the bank’s':
+    '; die Kondensatoren des Netzes selbst nach ihrem Leistungsschild und an denselben Enden, alle gleich, unabhängig von denen der Anlage',
   corners: 'Eckfälle',
   '{0}, nominal included, at every one of {1} levels': '{0}, Nennfall eingeschlossen, in jedem von {1} Schaltzuständen',
   orders: 'Ordnungen',

@@ -6,6 +6,9 @@ export const GERMAN_CHANNEL_NOTE_MESSAGES: Readonly<Record<string, Translation>>
   'quadrants-added': said(
     'Blindarbeit der Quadranten I und II wurde als induktiv addiert, die von III und IV als kapazitiv; abgegebene Energie wurde abgezogen.',
   ),
+  'quadrants-by-name': said(
+    'Blindarbeit der Quadranten I und II wurde als induktiv gelesen, die von III und IV als kapazitiv: {columns}.',
+  ),
   'channels-added': said('Die Kanäle {channels} wurden addiert als {quantity}.'),
   'channels-left-out': said(
     'Die Kanäle {channels} sagen dasselbe auf andere Weise oder nichts, was ein Lastgang braucht, und wurden ausgelassen.',

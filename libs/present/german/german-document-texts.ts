@@ -3,7 +3,7 @@ export const GERMAN_DOCUMENT_TEXTS: Readonly<Record<string, string>> = {
   'Judged again beside {0}, revision {1}.': 'Neu beurteilt neben {0}, Revision {1}.',
   'power factor as metered': 'Leistungsfaktor wie gemessen',
   'greatest demand': 'größte Leistung',
-  'lowest month with the bank': 'schwächster Monat mit Anlage',
+  'lowest month with the bank': 'Monatsminimum mit Anlage',
   'months below the target': 'Monate unter dem Zielwert',
   'intervals inside the target': 'Intervalle im Zielwert',
   'switchings a day': 'Schaltungen am Tag',
@@ -19,7 +19,7 @@ export const GERMAN_DOCUMENT_TEXTS: Readonly<Record<string, string>> = {
   'They stay out until {0} {1} been mended and the bank has been judged again.':
     'Sie bleiben abgeschaltet, bis Folgendes behoben {1}: {0}, und bis die Anlage neu beurteilt ist.',
   has: 'ist',
-  have: 'sind',
+  have: 'ist',
   'With {0} out nothing is over a limit, though near one: a second best, to be accepted by whoever answers for the installation.':
     'Ist Folgendes abgeschaltet, {0}, so liegt nichts über einem Grenzwert, wenn auch nahe daran: die zweitbeste Lösung, anzunehmen von der für die Anlage verantwortlichen Person.',
   'No stage may stay in.': 'Keine Stufe darf zugeschaltet bleiben.',
@@ -32,7 +32,7 @@ export const GERMAN_DOCUMENT_TEXTS: Readonly<Record<string, string>> = {
   'all ': 'alle ',
   '{0} of group {1}': '{0} der Gruppe {1}',
   'what would mend it': 'mögliche Abhilfe',
-  'lowest month': 'schwächster Monat',
+  'lowest month': 'Monats-Minimum',
   'bill a day': 'Rechnung je Tag',
   parts: 'Teile',
   ' (not enough by itself)': ' (allein nicht ausreichend)',
@@ -124,7 +124,6 @@ export const GERMAN_DOCUMENT_TEXTS: Readonly<Record<string, string>> = {
   'page {0} of {1}': 'Seite {0} von {1}',
   'Site: see page 1': 'Standort: siehe Seite 1',
   'Power-factor correction for {0}': 'Blindleistungskompensation für {0}',
-  'Proposal {0}, revision {1}, {2}': 'Vorschlag {0}, Revision {1}, {2}',
   'the site’s bank': 'vorhandene Anlage',
   'the first': 'die erste',
   '{0} revisions in numbers': '{0} Revisionen in Zahlen',
@@ -134,7 +133,7 @@ export const GERMAN_DOCUMENT_TEXTS: Readonly<Record<string, string>> = {
   of: 'für',
   'prepared by': 'erstellt von',
   reason: 'Grund',
-  engine: 'Rechenkern',
+  engine: 'Kern',
   content: 'Inhalt',
   'Judged again: {0}': 'Neu beurteilt: {0}',
   'Before and after are judged by the same engine, the bank as it measures. A way to mend it is weighed by itself, with the lowest set point that meets the target; parts are capacitors, stages, reactors and switches by the price book, and more cabinets where a larger bank needs them: no offer. The day of a change leaves the least sum of squares, each weekday with a mean of its own.':

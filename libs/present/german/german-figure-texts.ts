@@ -85,6 +85,8 @@ export const GERMAN_FIGURE_TEXTS: Readonly<Record<string, string>> = {
   'equipment fault current, not the fault level of resonance':
     'Kurzschlussstrom für Betriebsmittel, nicht die Kurzschlussleistung der Resonanz',
   'peak of the equipment fault current': 'Scheitelwert des Kurzschlussstroms für Betriebsmittel',
+  'thermal equivalent of the equipment fault current over 1 s':
+    'thermisch gleichwertiger Kurzschlussstrom für Betriebsmittel über 1 s',
   'least fault current, two phases': 'kleinster Fehlerstrom, zweipolig',
   'least instantaneous setting upstream': 'kleinste unverzögerte Einstellung vorgeordnet',
   'heat of the cabinet, at most': 'Wärme des Schranks, höchstens',
@@ -101,8 +103,10 @@ export const GERMAN_FIGURE_TEXTS: Readonly<Record<string, string>> = {
   'neutral current of the single-phase loads’ third harmonics':
     'Neutralleiterstrom der dritten Oberschwingung einphasiger Lasten',
   '{0}, share of its limit': '{0}, Anteil am Grenzwert',
-  group: 'Gruppe',
+  'bill\u00a0{0}': 'Rechnung\u00a0{0}',
+  'entry\u00a0{0}': 'Eintrag\u00a0{0}',
   ', order\u00a0{0}': ', Ordnung\u00a0{0}',
+  ', at {0}': ', an {0}',
   'all stages in': 'alle Stufen ein',
   'no peak with {0}': 'keine Überhöhung mit {0}',
   '{0}, the peak lies at order {1}': '{0}: die Überhöhung liegt bei Ordnung {1}',
@@ -142,7 +146,6 @@ export const GERMAN_FIGURE_TEXTS: Readonly<Record<string, string>> = {
   'kvar, lagging': 'kvar, induktiv',
   'Energy power factor at the meter, lagging kvarh only. Ring: before. Disc: after. Dotted: target {0}.':
     'Leistungsfaktor der Arbeit am Zähler, nur induktive kvarh. Ring: vorher. Punkt: nachher. Gepunktet: Zielwert {0}.',
-  'power factor': 'Leistungsfaktor',
   'Every month reaches {0}': 'Jeder Monat erreicht {0}',
   'One month stays': 'Ein Monat bleibt',
   '{0} months stay': '{0} Monate bleiben',

@@ -53,6 +53,8 @@ export const GERMAN_NETWORK_TEXTS: Readonly<Record<string, string>> = {
   'Behind the transformer, at the meter, {0} are short of the target in this interval.':
     'Hinter dem Transformator, am Zähler, fehlen in diesem Intervall {0} zum Zielwert.',
   'formula, and with the values put in': 'Formel, und mit eingesetzten Werten',
+  '{0}\u00a0in\u00a0years': '{0}\u00a0in\u00a0Jahren',
+  '{0}\u00a0in\u00a0months': '{0}\u00a0in\u00a0Monaten',
   '{0}\u00a0in\u00a0{1}': '{0}\u00a0in\u00a0{1}',
   'Network and duties: nothing is connected': 'Netz und Beanspruchungen: nichts ist zugeschaltet',
   'Without a bank there is no level to judge; the network stays as it is.':
@@ -157,6 +159,7 @@ export const GERMAN_NETWORK_TEXTS: Readonly<Record<string, string>> = {
     'Nichts ist angeschlossen, daher ist nichts zu schützen oder zu entladen.',
   'Stages, protection, discharge: {0} {1}, {2}': 'Stufen, Schutz, Entladung: {0} {1}, {2}',
   'Stages, both ratings with their voltages': 'Stufen, beide Leistungen mit ihren Spannungen',
+  group: 'Gr.',
   'ratings of one stage': 'Bemessung einer Stufe',
   reactor: 'Drossel',
   'on the capacitor': 'am Kondensator',

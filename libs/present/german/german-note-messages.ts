@@ -10,6 +10,9 @@ export const GERMAN_NOTE_MESSAGES: Readonly<Record<string, Translation>> = {
   'encoding-converted': said('Die Zeichen der Datei wurden aus {encoding} umgewandelt.'),
   'rows-before-header': said('{rows:Zeile steht|Zeilen stehen} vor der Kopfzeile und wurden ausgelassen.'),
   'header-repeated': said('Die Kopfzeile ist in {rows:Zeile|Zeilen} wiederholt, die ausgelassen wurden.'),
+  'text-rows-left-out': said(
+    '{rows:Textzeile wurde|Textzeilen wurden} zwischen den Daten ausgelassen, die erste in Zeile {first}.',
+  ),
   'total-rows-left-out': said('{rows:Summenzeile wurde|Summenzeilen wurden} ausgelassen.'),
   'decimal-mark-settled': said('Das Dezimalzeichen ist „{mark}“; jede andere Lesart scheitert.'),
   'thousands-divided': said('{numbers:Zahl hat|Zahlen haben} ein Zeichen zwischen den Tausendern.'),
@@ -17,6 +20,7 @@ export const GERMAN_NOTE_MESSAGES: Readonly<Record<string, Translation>> = {
   'serial-dates': said(
     'Die Zeitstempel sind fortlaufende Datumszahlen einer Tabellenkalkulation, ab 1900 gezählt und auf die Sekunde gerundet.',
   ),
+  'intervals-counted': said('{column} zählt die Intervalle eines Tages: {perDay} von Mitternacht bis Mitternacht.'),
   'rows-newest-first': said('Die neuesten Zeilen stehen zuerst; {rows:Zeile wurde|Zeilen wurden} umgekehrt.'),
   'rows-put-in-order': said(
     '{rows:Zeile stand|Zeilen standen} außer der Reihe und wurden eingeordnet.',
@@ -112,6 +116,10 @@ export const GERMAN_NOTE_MESSAGES: Readonly<Record<string, Translation>> = {
   'power-factor-sign-taken': said(
     'Das Vorzeichen des Leistungsfaktors wurde gelesen als: {sign}.',
     'Prüfen, ob es so ist.',
+  ),
+  'extremes-taken': said(
+    'Dem Namen nach ist {columns} ein Höchst- oder Kleinstwert; es wurde als Mittel des Intervalls gelesen.',
+    'Prüfen, ob es eines ist.',
   ),
   'phases-added': said('Spalten der drei Leiter wurden addiert: {columns}.'),
   'registers-differenced': said(

@@ -13,27 +13,27 @@ export const GERMAN_REASON_MESSAGES: Readonly<Record<string, Translation>> = {
     'Den fehlenden Grenzwert oder die fehlenden Lasten angeben oder von Hand beurteilen.',
   ),
   'limit.exceeded': said(
-    'Über dem Grenzwert: {duty}[, Gruppe {group}][, Ordnung {orderH}], {value} gegen {limit}[, bei {levelKvar} zugeschaltet][, Kurzschlussleistung {faultLevelMva}][, dämpfende Last {dampingKw}].',
+    'Über dem Grenzwert: {duty}[, Gruppe {group}][, Ordnung {orderH}][, {capacitors}][, an {bus}], {value} gegen {limit}[, bei {levelKvar} zugeschaltet][, Kurzschlussleistung {faultLevelMva}][, dämpfende Last {dampingKw}][, {standing}][, Netzkondensatoren bei {networkCapacitanceFactor} ihrer Kapazität].',
     'Anlage oder Netz ändern, bis der Grenzwert eingehalten ist.',
-    '{duty}[, Gruppe {group}][, Ordnung {orderH}][, bei {levelKvar} zugeschaltet][, Kurzschlussleistung {faultLevelMva}][, dämpfende Last {dampingKw}]',
+    '{duty}[, Gruppe {group}][, Ordnung {orderH}][, {capacitors}][, an {bus}][, bei {levelKvar} zugeschaltet][, Kurzschlussleistung {faultLevelMva}][, dämpfende Last {dampingKw}][, {standing}][, Netzkondensatoren bei {networkCapacitanceFactor} ihrer Kapazität]',
   ),
   'limit.near': said(
-    'Nahe am Grenzwert: {duty}[, Gruppe {group}][, Ordnung {orderH}], {value} gegen {limit}[, bei {levelKvar} zugeschaltet][, Kurzschlussleistung {faultLevelMva}][, dämpfende Last {dampingKw}].',
+    'Nahe am Grenzwert: {duty}[, Gruppe {group}][, Ordnung {orderH}][, {capacitors}][, an {bus}], {value} gegen {limit}[, bei {levelKvar} zugeschaltet][, Kurzschlussleistung {faultLevelMva}][, dämpfende Last {dampingKw}][, {standing}][, Netzkondensatoren bei {networkCapacitanceFactor} ihrer Kapazität].',
     'Den Abstand annehmen oder die Anlage ändern.',
-    '{duty}[, Gruppe {group}][, Ordnung {orderH}][, bei {levelKvar} zugeschaltet][, Kurzschlussleistung {faultLevelMva}][, dämpfende Last {dampingKw}]',
+    '{duty}[, Gruppe {group}][, Ordnung {orderH}][, {capacitors}][, an {bus}][, bei {levelKvar} zugeschaltet][, Kurzschlussleistung {faultLevelMva}][, dämpfende Last {dampingKw}][, {standing}][, Netzkondensatoren bei {networkCapacitanceFactor} ihrer Kapazität]',
   ),
   'limit.exceededAlready': said(
-    'Schon ohne Anlage überschritten: {duty}[, Gruppe {group}][, Ordnung {orderH}], {value} gegen {limit}[, bei {levelKvar} zugeschaltet][, Kurzschlussleistung {faultLevelMva}][, dämpfende Last {dampingKw}]; die Anlage trägt wenig dazu bei.',
+    'Schon ohne Anlage überschritten: {duty}[, Gruppe {group}][, Ordnung {orderH}][, {capacitors}][, an {bus}], {value} gegen {limit}[, bei {levelKvar} zugeschaltet][, Kurzschlussleistung {faultLevelMva}][, dämpfende Last {dampingKw}][, {standing}][, Netzkondensatoren bei {networkCapacitanceFactor} ihrer Kapazität]; die Anlage trägt wenig dazu bei.',
     'Die Verzerrung an ihren Quellen beheben; die Anlage behebt sie nicht.',
-    '{duty}[, Gruppe {group}][, Ordnung {orderH}][, bei {levelKvar} zugeschaltet][, Kurzschlussleistung {faultLevelMva}][, dämpfende Last {dampingKw}]. Schon ohne Anlage überschritten.',
+    '{duty}[, Gruppe {group}][, Ordnung {orderH}][, {capacitors}][, an {bus}][, bei {levelKvar} zugeschaltet][, Kurzschlussleistung {faultLevelMva}][, dämpfende Last {dampingKw}][, {standing}][, Netzkondensatoren bei {networkCapacitanceFactor} ihrer Kapazität]. Schon ohne Anlage überschritten.',
   ),
   'inrush.assumedInductance': said(
-    'Über dem Grenzwert bei angenommener Induktivität zwischen den Stufen: {duty}[, Gruppe {group}][, Ordnung {orderH}], {value} gegen {limit}.',
+    'Über dem Grenzwert bei angenommener Induktivität zwischen den Stufen: {duty}[, Gruppe {group}][, Ordnung {orderH}][, {capacitors}][, an {bus}], {value} gegen {limit}.',
     'Die Induktivität zwischen den Stufen angeben oder Drosseln oder ein einschaltstrombegrenzendes Schaltgerät vorsehen.',
-    '{duty}[, Gruppe {group}][, Ordnung {orderH}][, bei {levelKvar} zugeschaltet][, Kurzschlussleistung {faultLevelMva}][, dämpfende Last {dampingKw}]. Die Induktivität zwischen den Stufen ist angenommen.',
+    '{duty}[, Gruppe {group}][, Ordnung {orderH}][, {capacitors}][, an {bus}][, bei {levelKvar} zugeschaltet][, Kurzschlussleistung {faultLevelMva}][, dämpfende Last {dampingKw}][, {standing}][, Netzkondensatoren bei {networkCapacitanceFactor} ihrer Kapazität]. Die Induktivität zwischen den Stufen ist angenommen.',
   ),
   'peak.near': said(
-    'Mit {levelKvar} zugeschaltet liegt die Parallelresonanz des Netzes bei Ordnung {peakOrderH}, innerhalb von {reachH} der vorhandenen Ordnung {presentOrderH}[, Kurzschlussleistung {faultLevelMva}][, dämpfende Last {dampingKw}].',
+    'Mit {levelKvar} zugeschaltet liegt die Parallelresonanz des Netzes bei Ordnung {peakOrderH}, innerhalb von {reachH} der vorhandenen Ordnung {presentOrderH}[, gesehen an {bus}][, Kurzschlussleistung {faultLevelMva}][, dämpfende Last {dampingKw}][, {standing}].',
     'Die Verzerrung in diesem Schaltzustand messen, bevor er lange benutzt wird, oder die Resonanz verschieben.',
   ),
   'plain.distortingShare': said(

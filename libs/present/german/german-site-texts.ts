@@ -11,7 +11,7 @@ export const GERMAN_SITE_TEXTS: Readonly<Record<string, string>> = {
   'sized by': 'bemessen nach',
   effective: 'wirksam',
   target: 'Zielwert',
-  'lowest month before': 'schwächster Monat vorher',
+  'lowest month before': 'Monatsminimum vorher',
   'its limit': 'ihr Grenzwert',
   days: 'Tage',
   'group\u00a0{0}': 'Gruppe\u00a0{0}',
@@ -34,6 +34,7 @@ export const GERMAN_SITE_TEXTS: Readonly<Record<string, string>> = {
   Friday: 'Freitag',
   Saturday: 'Samstag',
   Sunday: 'Sonntag',
+  '{0}\u00a0{1}\u00a0{2}': '{0}.\u00a0{1}\u00a0{2}',
   'nominal voltage of the board': 'Nennspannung der Hauptverteilung',
   'fault level at the board': 'Kurzschlussleistung an der Hauptverteilung',
   'fault level at the primary': 'Kurzschlussleistung auf der Primärseite',
@@ -134,6 +135,5 @@ export const GERMAN_SITE_TEXTS: Readonly<Record<string, string>> = {
   'Bank: {0}.': 'Anlage: {0}.',
   'Single-line diagram. {0} Board: {1}. Feeders: {2}. {3}':
     'Übersichtsschaltplan. {0} Hauptverteilung: {1}. Abgänge: {2}. {3}',
-  meter: 'Zähler',
   'and {0} more': 'und {0} weitere',
 };

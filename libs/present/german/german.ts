@@ -13,6 +13,7 @@ import { GERMAN_MONEY_TEXTS } from './german-money-texts.js';
 import { GERMAN_NAME_TEXTS } from './german-name-texts.js';
 import { GERMAN_NETWORK_TEXTS } from './german-network-texts.js';
 import { GERMAN_NOTE_MESSAGES } from './german-note-messages.js';
+import { GERMAN_PARTINGS } from './german-partings.js';
 import { GERMAN_REASON_MESSAGES } from './german-reason-messages.js';
 import { GERMAN_RECORD_MESSAGES } from './german-record-messages.js';
 import { GERMAN_SITE_TEXTS } from './german-site-texts.js';
@@ -44,4 +45,5 @@ export const GERMAN: Catalogue = {
     ...GERMAN_RECORD_MESSAGES,
     ...GERMAN_UNUSUAL_MESSAGES,
   },
+  partings: GERMAN_PARTINGS,
 };
