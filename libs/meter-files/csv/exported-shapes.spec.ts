@@ -96,6 +96,11 @@ describe('a column a phase', () => {
     expect(questions[0]!.readings).toHaveLength(4);
   });
 
+  it('is asked about where the parts may be loads', async () => {
+    const content = file('Time;Load A (kW);Load B (kW);Load C (kW);kvar', (i) => [at(i), 10, 20, 10 + i, 20 + i]);
+    expect((await questionOf(content)).questions[0]!.readings).toHaveLength(4);
+  });
+
   it('is none of a feeder, a meter or a tariff', async () => {
     for (const name of ['Feeder', 'T', 'Meter']) {
       const content = file(`Time;${name}1 kW;${name}2 kW;${name}3 kW;kvar`, (i) => [at(i), 10, 20, 10 + i, 20 + i]);
@@ -165,6 +170,16 @@ describe('stamps', () => {
   it('are refused where several rows share a date and nothing says the hour', async () => {
     const content = file('Date;kWh;kvarh', (i) => ['14/03/2024', 40 + i, 20]);
     expect((await refusalOf(content)).problems[0]).toMatchObject({ code: 'bad-time', row: 2, column: 1 });
+  });
+
+  it('are refused where several rows share an hour and nothing says the minute', async () => {
+    const rows = Array.from({ length: 96 }, (_, i) => i);
+    const row = (i: number) => ['14/03/2024', Math.floor(i / 4), (i % 4) * 15, 40 + i, 20];
+    expect((await refusalOf(file('Date;Hour;Minute;kW;kvar', row, rows))).problems[0]).toMatchObject({
+      code: 'bad-time',
+      row: 2,
+      column: 2,
+    });
   });
 
   it.each([

@@ -54,6 +54,9 @@ const QUANTITY_WORDS = [
 ] as const;
 const BESIDE_PHASE = /^(?:phase|ph|line|l|[uvi]|total|sum|avg|average|mean)$/;
 
+/** Of what is consumed there may be several parts. */
+const PARTS = /load|last|demand|usage|consum|verbrau?[ci]|line/i;
+
 /** The columns as phases; none where the names say anything but a quantity, or nothing of one. */
 function phasesOf(three: readonly HeaderColumn[], at: number): HeaderColumn[] {
   const names = three.map(({ name }) => name);
@@ -63,9 +66,9 @@ function phasesOf(three: readonly HeaderColumn[], at: number): HeaderColumn[] {
   if (role === null || ['time', 'meter', 'quality', 'standby', 'connected'].includes(role)) return [];
   const words = wordsOf(findUnit(stem).rest).filter((word) => !BESIDE_PHASE.test(word));
   if (!words.every((word) => QUANTITY_WORDS.some((group) => says([word], group)))) return [];
-  // “Power 1” counts anything; P1, kW1 and “Power A” are the conductors
+  // “Power 1” and “Load A” may be anything; P1, kW1 and “Power A” are the conductors
   const counted = /\d/.test(names[0]![at]!) && !/[\p{L}_]$/u.test(names[0]!.slice(0, at));
-  const open = counted && three.every(({ role: own }) => own !== null);
+  const open = (counted || PARTS.test(stem)) && three.every(({ role: own }) => own !== null);
   return three.map((column, k) => {
     const phase = (k + 1) as 1 | 2 | 3;
     const read = { ...stemmed, name: column.name, index: column.index, between: column.between ?? stemmed.between };

@@ -70,7 +70,9 @@ export class RowStamps {
     if (this.#time.counted && this.rows.count > 0) this.#settleCounts();
     this.#roundLastSeconds();
     if (this.#dates === 0) return;
-    if (this.#dates === this.rows.count) this.#refuseSharedDates();
+    if (this.#dates === this.rows.count) {
+      this.#refuseShared(this.#time.stamp, 'a clock time beside the date, where a day has several rows');
+    }
     const midnights = this.rows.clockS.subarray(0, this.rows.count).filter((clockS) => clockS === 0).length;
     if (midnights === this.#dates) return;
     const expected = 'a date and a time, as in other rows of midnight';
@@ -97,6 +99,7 @@ export class RowStamps {
     const counted = settleCounts(rows);
     if (counted !== null) {
       this.counted = counted === 'clock' ? null : counted;
+      this.#refuseShared(this.#time.clock, 'a clock time with minutes, where an hour has several rows');
       return;
     }
     const expected = 'hours 1 to 24 or 0 to 23, or intervals of a day counted alike, such as 1 to 48 or 1 to 96';
@@ -109,15 +112,14 @@ export class RowStamps {
     });
   }
 
-  /** Dates without clock times say when a day is, not when in it a row is. */
-  #refuseSharedDates(): void {
-    const { rows } = this;
+  /** Dates without clock times say when a day is, and hours when an hour is, not when in it a row is. */
+  #refuseShared(column: number, expected: string): void {
+    const { dateKey, clockS, rowNumber, count } = this.rows;
     let shared = 0;
-    for (let i = 1; i < rows.count; i++) if (rows.dateKey[i] === rows.dateKey[i - 1]) shared++;
-    if (shared < rows.count / 2) return;
-    const expected = 'a clock time beside the date, where a day has several rows';
-    const place = { row: rows.rowNumber[0]!, column: this.#time.stamp + 1 };
-    this.#problems.add({ code: 'bad-time', ...place, expected, found: 'a date alone' });
+    for (let i = 1; i < count; i++) if (dateKey[i] === dateKey[i - 1] && clockS[i] === clockS[i - 1]) shared++;
+    if (shared < count / 2) return;
+    const found = `${shared + 1} rows of ${count} without one`;
+    this.#problems.add({ code: 'bad-time', row: rowNumber[0]!, column: column + 1, expected, found });
   }
 
   #stampOf(text: string): Stamp | null {
