@@ -119,6 +119,7 @@ export * from './plan/search.js';
 export * from './plan/search-judge.js';
 export * from './plan/settle-bank.js';
 export * from './plan/settled-site.js';
+export * from './plan/shown-figures.js';
 export * from './plan/site.js';
 export * from './plan/site-netlist.js';
 export * from './plan/site-search.js';

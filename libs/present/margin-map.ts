@@ -16,7 +16,11 @@ const SOLID_FROM_PCT = 100 * (1 + 1e-9);
  * @param mostLevels more levels than this are thinned to those nearest their limits, the lowest and highest kept
  * @returns chart made of cells; the greatest level on top
  */
-export function marginMap(margins: MarginMap, name: string, mostLevels = Number.POSITIVE_INFINITY): Chart {
+export function marginMap(
+  margins: Pick<MarginMap, 'levelsKvar' | 'ordersH' | 'sharePct'>,
+  name: string,
+  mostLevels = Number.POSITIVE_INFINITY,
+): Chart {
   const all = margins.levelsKvar.map((kvar, at) => ({ kvar, shares: margins.sharePct[at]! })).reverse();
   const levels = nearestLimits(all, mostLevels);
   const over = all.filter(({ kvar, shares }) => kvar > 0 && shares.some((share) => share > SOLID_FROM_PCT)).length;

@@ -3,7 +3,7 @@ import type { BarFigure } from './bar-figure.js';
 import { formatNumber } from './format-number.js';
 
 /** So many switchings a stage and year are counted as much in practice. */
-const PRACTICE_A_YEAR = 5000;
+export const PRACTICE_A_YEAR = 5000;
 const YEAR_S = 365 * 86_400;
 
 /**

@@ -1,11 +1,13 @@
 import type { Result } from '#libs/engine/index.js';
 import { formatNumber, formatQuantity } from '#libs/present/format-number.js';
+import { setPointWorking } from '#libs/present/headline-workings.js';
 import { formatMonth } from '#libs/present/local-stamp.js';
-import { bankOf } from '../desk/desk-state.js';
+import { bankOf, type DeskState } from '../desk/desk-state.js';
 import { useDesk } from '../desk/use-desk.js';
 import { Bars } from '../draw/bars.js';
 import { BeingDrawn } from '../draw/being-drawn.js';
 import { Plot } from '../draw/plot.js';
+import { valueAt } from '../field/document-path.js';
 import { latestResult } from '../line/latest-result.js';
 import { NoRecord } from '../record/no-record.js';
 import { Headline } from '../working/headline.js';
@@ -38,7 +40,12 @@ export function BankSheet() {
               : 'effective, all stages',
             id: 'bank.effectiveKvar',
           },
-          { value: control.setPointPowerFactor, under: 'set point', digits: 'given' },
+          {
+            value: control.setPointPowerFactor,
+            under: 'set point',
+            digits: 'given',
+            working: setPointWorking(control.setPointPowerFactor, setPointFrom(state)),
+          },
           {
             value: operation.totalSwitchings,
             under:
@@ -73,18 +80,27 @@ export function BankSheet() {
       ) : (
         <>
           <div className="split replay">
-            <ReplayFigure replay={charts.bank.replay} />
-            <Plot chart={charts.bank.phasors} height={240} />
+            <ReplayFigure replay={charts.bank.replay} workings={charts.bank.workings.day} />
+            <Plot chart={charts.bank.phasors} height={240} workings={charts.bank.workings.currents} />
           </div>
           <div className="split thirds">
-            <Bars figure={charts.bank.switchings} />
-            <Bars figure={charts.bank.hours} />
+            <Bars
+              figure={charts.bank.switchings}
+              working={['operation.totalSwitchings']}
+              workings={charts.bank.workings.switchings}
+            />
+            <Bars figure={charts.bank.hours} workings={charts.bank.workings.hours} />
             <Plot chart={charts.bank.months} height={220} working={['operation.lowestMonthPowerFactor']} />
           </div>
         </>
       )}
     </>
   );
+}
+
+function setPointFrom({ document, kept }: DeskState): 'typed' | 'searched' | 'target' {
+  if (valueAt(document, 'control.setPointPowerFactor') !== undefined) return 'typed';
+  return kept?.kind === 'plan' ? 'searched' : 'target';
 }
 
 function headline({ bank, operation, requirement }: Result): string {

@@ -1,3 +1,4 @@
+import type { Figure } from '#libs/engine/index.js';
 import type { DayReplay } from '#libs/present/day-replay.js';
 import { formatNumber } from '#libs/present/format-number.js';
 import { formatClock } from '#libs/present/local-stamp.js';
@@ -13,18 +14,19 @@ const LEFT = 40;
 const RIGHT = 52;
 
 /** A day replayed: load, need and the stages as blocks; below a row a stage; one cursor through both. */
-export function ReplayFigure({ replay }: { replay: DayReplay }) {
+export function ReplayFigure({ replay, workings }: { replay: DayReplay; workings: readonly Figure[] }) {
   const { desk, state } = useDesk();
   const [place, width] = usePlotWidth();
   const day = (days: number) => desk.pick({ momentS: replay.beginS + (0.5 + days) * 86_400 });
-  const { cursorS } = state.picks;
+  const { momentS } = state.picks;
+  const cursorS = state.picks.cursorS ?? (momentS ?? replay.beginS) - replay.beginS;
   const at = intervalAt(replay, cursorS);
   const words =
     replay.atS.length === 0
       ? 'no reading'
       : `${formatClock(replay.atS[at]!)}, ${formatNumber(replay.connectedKvar[at]!)} of ${formatNumber(replay.loadKvar[at]!)} kvar`;
   return (
-    <ChartFigure figure={replay} steps={false}>
+    <ChartFigure figure={replay} workings={workings} steps={false}>
       <div ref={place}>
         {width === 0 ? null : (
           <>

@@ -1,4 +1,4 @@
-import type { Problem, RecordSummary, Result, Verdict, ZoneTable } from '#libs/engine/index.js';
+import type { Figure, Problem, RecordSummary, Result, Verdict, ZoneTable } from '#libs/engine/index.js';
 import type { BarFigure } from '#libs/present/bar-figure.js';
 import type { Chart } from '#libs/present/chart.js';
 import type { DayReplay } from '#libs/present/day-replay.js';
@@ -12,8 +12,8 @@ import type { SiteDocument } from '../api/shown.js';
 export interface Picks {
   /** a moment of the day that is replayed [s] */
   momentS: number | null;
-  /** second of that day under the cursor [s] */
-  cursorS: number;
+  /** second of that day under the cursor; null: that of the moment [s] */
+  cursorS: number | null;
   /** the level drawn heavy [kvar] */
   levelKvar: number | null;
 }
@@ -36,11 +36,27 @@ export interface StationCharts {
   record?: { year: YearMap };
   supply?: { singleLine: SingleLine };
   need?: { target: Chart; duration: Chart; year: YearMap };
-  bank?: { replay: DayReplay; phasors: Chart; switchings: BarFigure; hours: BarFigure; months: Chart; names: string[] };
+  bank?: {
+    replay: DayReplay;
+    phasors: Chart;
+    switchings: BarFigure;
+    hours: BarFigure;
+    months: Chart;
+    names: string[];
+    workings: Record<'day' | 'currents' | 'switchings' | 'hours', Figure[]>;
+  };
   network?: {
     impedance: Chart;
     margins: Chart;
-    rival: { name: string; impedance: Chart; margins: Chart; verdict: Verdict } | null;
+    rival: {
+      name: string;
+      impedance: Chart;
+      margins: Chart;
+      verdict: Verdict;
+      workings: Record<'impedance' | 'margins', Figure[]>;
+    } | null;
+    /** of the picked row of the map */
+    marginWorkings: Figure[];
     duties: BarFigure;
     levelsKvar: number[];
   };

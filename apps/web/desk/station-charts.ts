@@ -1,5 +1,12 @@
 import { type Outcome, type RequirementMonth, type Study } from '#libs/engine/index.js';
 import type { Chart, ChartTable } from '#libs/present/chart.js';
+import {
+  hoursWorkings,
+  marginWorkings,
+  momentWorkings,
+  practiceWorking,
+  rivalWorkings,
+} from '#libs/present/chart-workings.js';
 import { dayReplay } from '#libs/present/day-replay.js';
 import { decimateColumns } from '#libs/present/decimate.js';
 import { durationCurve } from '#libs/present/duration-curve.js';
@@ -117,14 +124,22 @@ function bankCharts({ outcome, study }: Looked, picks: Picks): NonNullable<Stati
   const { beginS: column, busKw, busKvar, connectedKvar } = outcome.series;
   const at = Math.max(
     0,
-    column.findLastIndex((s) => s <= beginS + picks.cursorS),
+    column.findLastIndex((s) => s <= (picks.cursorS === null ? momentS : beginS + picks.cursorS)),
   );
   const moment = { beginS: column[at]!, kw: busKw[at]!, loadKvar: busKvar[at]!, bankKvar: connectedKvar[at]! };
+  const hours = hoursAtLevel(outcome);
+  const { day, currents } = momentWorkings(outcome, study, replay, at);
   return {
     replay,
     phasors: phasors(outcome, moment),
     switchings: stageSwitchings(outcome),
-    hours: hoursAtLevel(outcome),
+    hours,
+    workings: {
+      day,
+      currents,
+      switchings: outcome.bank.groups.length === 0 ? [] : [practiceWorking(outcome)],
+      hours: hoursWorkings(outcome, new Set(hours.bars.map(({ name }) => name))),
+    },
     months: powerFactorByMonth(outcome),
     names: outcome.bank.groups.map((group) => bothRatings(outcome, group)),
   };
@@ -150,8 +165,9 @@ function networkCharts(outcome: Outcome, picks: Picks): NonNullable<StationChart
     ...(hasBank ? {} : { finding: 'Impedance at the bus without a bank' }),
     caption: `${chart.caption} Band: all levels. Line: ${words}. Dashed: no bank. Ticks: each level’s peak, heavy near an order present.`,
   });
+  const common = { margins, duties, levelsKvar, marginWorkings: marginWorkings(outcome.margins, picks.levelKvar) };
   if (outcome.rival === null) {
-    return { impedance: explained(figure.chart(undefined, levelKvar), line), margins, rival: null, duties, levelsKvar };
+    return { ...common, impedance: explained(figure.chart(undefined, levelKvar), line), rival: null };
   }
   const { bank, verdict, margins: other } = outcome.rival;
   const name = bankName(bank.groups);
@@ -161,16 +177,15 @@ function networkCharts(outcome: Outcome, picks: Picks): NonNullable<StationChart
     mostOhm: Math.max(figure.scale.mostOhm, second.scale.mostOhm),
   };
   return {
+    ...common,
     impedance: explained(figure.chart(scale, levelKvar), line),
-    margins,
     rival: {
       name,
       verdict,
       impedance: explained(second.chart(scale), 'all stages in'),
       margins: marginMap(other, name),
+      workings: rivalWorkings(outcome, outcome.rival),
     },
-    duties,
-    levelsKvar,
   };
 }
 

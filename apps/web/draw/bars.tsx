@@ -1,4 +1,5 @@
 import { useId } from 'react';
+import type { Figure } from '#libs/engine/index.js';
 import type { Bar, BarFigure } from '#libs/present/bar-figure.js';
 import { ChartFigure } from './chart-figure.js';
 import { textWidth } from './plot-box.js';
@@ -8,15 +9,17 @@ import { usePlotWidth } from './plot-size.js';
 export function Bars({
   figure,
   working,
+  workings,
   isWide = false,
 }: {
   figure: BarFigure;
   working?: readonly string[];
+  workings?: readonly Figure[];
   isWide?: boolean;
 }) {
   const [place, width] = usePlotWidth();
   return (
-    <ChartFigure figure={figure} working={working}>
+    <ChartFigure figure={figure} working={working} workings={workings}>
       <div ref={place}>
         {width === 0 ? null : isWide ? (
           <DutySvg figure={figure} width={width} />

@@ -1,6 +1,8 @@
 import { type ReactNode, useId, useRef, useState } from 'react';
+import type { Figure } from '#libs/engine/index.js';
 import type { Chart } from '#libs/present/chart.js';
-import { WorkingBlocks } from '../working/working-block.js';
+import { useAskedFigure } from '../working/asked-figure.js';
+import { WorkingBlock, WorkingBlocks } from '../working/working-block.js';
 import { ChartTableView } from './chart-table.js';
 import { csvOf, saveText, svgOf } from './save-files.js';
 
@@ -14,6 +16,7 @@ export type Figured = Pick<Chart, 'id' | 'finding' | 'caption' | 'sentence' | 't
 export function ChartFigure({
   figure,
   working = [],
+  workings = [],
   steps = true,
   picture,
   children,
@@ -21,16 +24,20 @@ export function ChartFigure({
   figure: Figured;
   /** ids of the figures whose working belongs here */
   working?: readonly string[];
+  /** workings of what is drawn alone */
+  workings?: readonly Figure[];
   /** false where the drawing has a reach of its own */
   steps?: boolean;
   /** the drawing as a file, where it is none of lines on the page */
   picture?: () => string;
   children: ReactNode;
 }) {
-  const [open, setOpen] = useState<'table' | 'working' | 'save' | null>(null);
+  const [opened, setOpen] = useState<'table' | 'working' | 'save' | 'none' | null>(null);
+  const asked = useAskedFigure();
+  const open = opened ?? (workings.some(({ id }) => id === asked) ? 'working' : null);
   const plot = useRef<HTMLDivElement | null>(null);
   const heading = useId();
-  const toggle = (part: typeof open) => setOpen(open === part ? null : part);
+  const toggle = (part: typeof open) => setOpen(open === part ? 'none' : part);
   return (
     <section className="section figure" aria-labelledby={heading}>
       <div className="figure-head">
@@ -38,7 +45,7 @@ export function ChartFigure({
           <h2 id={heading}>{figure.finding}</h2>
           <span className="ways">
             <Toggle name="Table" isOpen={open === 'table'} onClick={() => toggle('table')} />
-            {working.length === 0 ? null : (
+            {working.length + workings.length === 0 ? null : (
               <Toggle name="Working" isOpen={open === 'working'} onClick={() => toggle('working')} />
             )}
             <Toggle name="Save" isOpen={open === 'save'} onClick={() => toggle('save')} />
@@ -55,7 +62,8 @@ export function ChartFigure({
           {children}
           {steps ? <StepThrough figure={figure} /> : null}
         </div>
-        {open === 'working' ? <WorkingBlocks ids={working} /> : null}
+        {open === 'working' && working.length > 0 ? <WorkingBlocks ids={working} /> : null}
+        {open === 'working' ? workings.map((figure) => <WorkingBlock key={figure.id} figure={figure} />) : null}
         {open === 'table' ? <ChartTableView table={figure.table} name={figure.finding} /> : null}
         <div className="print-only">
           <ChartTableView table={figure.table} name={figure.finding} />

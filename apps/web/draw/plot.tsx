@@ -1,3 +1,4 @@
+import type { Figure } from '#libs/engine/index.js';
 import type { Chart } from '#libs/present/chart.js';
 import { ChartFigure } from './chart-figure.js';
 import { ChartSvg, type PartStyles } from './chart-svg.js';
@@ -9,15 +10,17 @@ export function Plot({
   height,
   styles,
   working,
+  workings,
 }: {
   chart: Chart;
   height: number;
   styles?: PartStyles;
   working?: readonly string[];
+  workings?: readonly Figure[];
 }) {
   const [place, width] = usePlotWidth();
   return (
-    <ChartFigure figure={chart} working={working}>
+    <ChartFigure figure={chart} working={working} workings={workings}>
       <div ref={place} className={chart.equalScales ? 'square' : undefined}>
         {width === 0 ? null : <ChartSvg chart={chart} width={width} height={height} styles={styles} />}
       </div>

@@ -3,7 +3,9 @@ import { type Address, STATIONS, type Station } from '../address.js';
 import { isChanged } from '../desk/desk-state.js';
 import { SiteDesk } from '../desk/site-desk.js';
 import { DeskContext, useDesk } from '../desk/use-desk.js';
+import { picksOf } from '../working/asked-figure.js';
 import { Head } from './head.js';
+import { latestResult } from './latest-result.js';
 import { Notices } from './notices.js';
 import { OpenPoints } from './open-points.js';
 import { StationLine } from './station-line.js';
@@ -41,7 +43,13 @@ export function SitePage({ address }: { address: SiteAddress }) {
 
 function OpenSite({ address }: { address: SiteAddress }) {
   const { desk, state } = useDesk();
-  const { station, field } = address;
+  const { station, field, figure } = address;
+  const levelsKvar = latestResult(state)?.bank.levelsKvar;
+  // biome-ignore lint/correctness/useExhaustiveDependencies: picked once, when the levels are first known
+  useEffect(() => {
+    const picks = levelsKvar === undefined ? null : picksOf(figure, levelsKvar);
+    if (picks !== null) desk.pick(picks);
+  }, [desk, figure, levelsKvar === undefined]);
   useEffect(() => desk.openStation(station), [desk, station]);
   useEffect(() => {
     if (field !== null) focusField(field);

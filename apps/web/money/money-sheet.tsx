@@ -2,6 +2,7 @@ import { type Money, type MoneyPapers, moneyPapers, type Site } from '#libs/engi
 import { billsByMonth } from '#libs/present/bills-by-month.js';
 import { cashFlowFigure, isPriced, type PricedMoney } from '#libs/present/cash-flow-figure.js';
 import { formatFixed } from '#libs/present/format-number.js';
+import { capitalWorking } from '#libs/present/headline-workings.js';
 import {
   financeWords,
   formatMoney,
@@ -90,7 +91,13 @@ function Figures({ money, papers }: { money: Money; papers: MoneyPapers }) {
 function keyFigures(money: PricedMoney, currency: string) {
   const { capital, npv, paybackYears } = money;
   return [
-    { value: capital.total, unit: currency, under: 'to build', digits: 'whole' as const },
+    {
+      value: capital.total,
+      unit: currency,
+      under: 'to build',
+      digits: 'whole' as const,
+      working: capitalWorking(capital, currency),
+    },
     { value: npv, unit: currency, under: 'net present value', digits: 'whole' as const, id: 'money.npv' },
     {
       value: paybackYears,

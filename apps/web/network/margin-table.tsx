@@ -1,3 +1,4 @@
+import type { Figure } from '#libs/engine/index.js';
 import type { Chart, Mark } from '#libs/present/chart.js';
 import { useDesk } from '../desk/use-desk.js';
 import { ChartFigure } from '../draw/chart-figure.js';
@@ -8,13 +9,21 @@ import { marginPicture } from './margin-picture.js';
 type Cell = Extract<Mark, { kind: 'cell' }>;
 
 /** Level by order, each cell its share of the limit: a table with fills that mean what its numbers say. */
-export function MarginTable({ chart, isPickable = false }: { chart: Chart; isPickable?: boolean }) {
+export function MarginTable({
+  chart,
+  workings,
+  isPickable = false,
+}: {
+  chart: Chart;
+  workings: readonly Figure[];
+  isPickable?: boolean;
+}) {
   const { desk, state } = useDesk();
   const levels = [...(latestResult(state)?.bank.levelsKvar ?? [])].reverse();
   const cells = chart.marks.filter((mark): mark is Cell => mark.kind === 'cell');
   const picked = isPickable ? pickedRow(levels, state.picks.levelKvar) : -1;
   return (
-    <ChartFigure figure={chart} steps={false} picture={() => marginPicture(chart)}>
+    <ChartFigure figure={chart} workings={workings} steps={false} picture={() => marginPicture(chart)}>
       <ScrollTable look="map" name={`Map: ${chart.finding}`}>
         <thead>
           <tr>

@@ -64,18 +64,20 @@ export function NetworkSheet() {
 }
 
 function Pictures({ charts }: { charts: NonNullable<StationCharts['network']> }) {
-  const { impedance, margins, rival, duties } = charts;
+  const { impedance, margins, marginWorkings, rival, duties } = charts;
   const styles = { site: 'picked' };
   const working = ['network.parallelOrderClosedFormH', 'bank.group*'];
   return (
     <>
       <div className="split halves">
         <Plot chart={impedance} height={300} styles={styles} working={working} />
-        {rival === null ? null : <Plot chart={rival.impedance} height={300} styles={styles} />}
+        {rival === null ? null : (
+          <Plot chart={rival.impedance} height={300} styles={styles} workings={rival.workings.impedance} />
+        )}
       </div>
       <div className={rival === null ? 'split halves' : 'split thirds'}>
-        <MarginTable chart={margins} isPickable />
-        {rival === null ? null : <MarginTable chart={rival.margins} />}
+        <MarginTable chart={margins} workings={marginWorkings} isPickable />
+        {rival === null ? null : <MarginTable chart={rival.margins} workings={rival.workings.margins} />}
         <Bars figure={duties} working={['duties*']} isWide />
       </div>
     </>

@@ -1,5 +1,6 @@
 import { useState } from 'react';
 import { formatNumber } from '#libs/present/format-number.js';
+import { recordWorkings } from '#libs/present/headline-workings.js';
 import { dayBeginS } from '#libs/present/local-stamp.js';
 import { noonOfDayS } from '#libs/present/year-map.js';
 import type { RecordShown } from '../api/shown.js';
@@ -19,13 +20,14 @@ export function RecordPictures({ record, trace }: { record: RecordShown; trace: 
   const [dayS, setDayS] = useState<number | null>(null);
   const { record: summary } = record;
   const year = state.charts.record?.year;
+  const [read, missing, greatest] = recordWorkings(summary);
   return (
     <>
       <Headline
         figures={[
-          { value: summary.intervals, under: 'intervals read', digits: 'given' },
-          { value: summary.missing, under: 'missing', digits: 'given' },
-          { value: summary.maxKw, unit: 'kW', under: 'highest' },
+          { value: summary.intervals, under: 'intervals read', digits: 'given', working: read },
+          { value: summary.missing, under: 'missing', digits: 'given', working: missing },
+          { value: summary.maxKw, unit: 'kW', under: 'highest', working: greatest },
           { value: summary.powerFactorLagging, under: 'factor of the record', id: 'record.powerFactorLagging' },
         ]}
       >

@@ -1,7 +1,11 @@
 import { type ReactNode, useState } from 'react';
-import { useAddress } from '../address.js';
+import type { Figure } from '#libs/engine/index.js';
+import { useDesk } from '../desk/use-desk.js';
 import { Quantity } from '../draw/quantity.js';
-import { WorkingBlocks } from './working-block.js';
+import { keptEstimate } from '../line/kept-estimate.js';
+import { latestResult } from '../line/latest-result.js';
+import { useAskedFigure } from './asked-figure.js';
+import { WorkingBlock, WorkingBlocks } from './working-block.js';
 
 /** A figure beside the headline; with an id it opens its working. */
 export interface KeyFigure {
@@ -10,15 +14,20 @@ export interface KeyFigure {
   under: ReactNode;
   /** of the figure in the result whose working it opens */
   id?: string;
+  /** the working itself, where the result holds none of it */
+  working?: Figure;
   digits?: 'given' | 'whole';
 }
 
 /** The answer of a station in a sentence, with the figures that decide it. */
 export function Headline({ children, figures }: { children: ReactNode; figures: readonly KeyFigure[] }) {
-  const address = useAddress();
-  const asked = address.page === 'site' ? address.figure : null;
+  const { state } = useDesk();
+  const asked = useAskedFigure();
   const [opened, setOpened] = useState<string | null>(null);
-  const open = opened ?? asked;
+  const own = figures.flatMap(({ working }) => working ?? []);
+  const known = [...own, ...((latestResult(state) ?? keptEstimate(state))?.figures ?? [])];
+  const open = opened ?? (known.some(({ id }) => id === asked) ? asked : null);
+  const shown = own.find(({ id }) => id === open);
   return (
     <>
       <div className="headline">
@@ -28,19 +37,24 @@ export function Headline({ children, figures }: { children: ReactNode; figures: 
             <KeyFigureView
               key={at}
               figure={figure}
-              isOpen={figure.id !== undefined && figure.id === open}
-              onOpen={() => setOpened(open === figure.id ? '' : (figure.id ?? ''))}
+              isOpen={idOf(figure) !== undefined && idOf(figure) === open}
+              onOpen={() => setOpened(open === idOf(figure) ? '' : (idOf(figure) ?? ''))}
             />
           ))}
         </div>
       </div>
-      {open === null || open === '' ? null : <WorkingBlocks ids={[open]} />}
+      {shown === undefined ? null : <WorkingBlock figure={shown} />}
+      {shown !== undefined || open === null || open === '' ? null : <WorkingBlocks ids={[open]} />}
     </>
   );
 }
 
+function idOf({ id, working }: KeyFigure): string | undefined {
+  return working?.id ?? id;
+}
+
 function KeyFigureView({ figure, isOpen, onOpen }: { figure: KeyFigure; isOpen: boolean; onOpen: () => void }) {
-  const { value, unit, under, id, digits } = figure;
+  const { value, unit, under, digits } = figure;
   const body = (
     <>
       <span className="value">
@@ -49,7 +63,7 @@ function KeyFigureView({ figure, isOpen, onOpen }: { figure: KeyFigure; isOpen: 
       <span className="under">{under}</span>
     </>
   );
-  if (id === undefined) return <div className="plain">{body}</div>;
+  if (idOf(figure) === undefined) return <div className="plain">{body}</div>;
   return (
     <button type="button" aria-expanded={isOpen} onClick={onOpen}>
       {body}

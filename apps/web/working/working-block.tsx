@@ -1,8 +1,10 @@
+import { useEffect, useRef } from 'react';
 import type { Figure } from '#libs/engine/index.js';
 import { formatNumber, GAP } from '#libs/present/format-number.js';
 import { useDesk } from '../desk/use-desk.js';
 import { keptEstimate } from '../line/kept-estimate.js';
 import { latestResult } from '../line/latest-result.js';
+import { useAskedFigure } from './asked-figure.js';
 
 /** The working of several figures. */
 export function WorkingBlocks({ ids }: { ids: readonly string[] }) {
@@ -25,8 +27,13 @@ export function WorkingBlocks({ ids }: { ids: readonly string[] }) {
 export function WorkingBlock({ figure }: { figure: Figure }) {
   const { label, value, unit, formula, working, source, id } = figure;
   const shown = unit === '' ? '' : `${GAP}${unit}`;
+  const block = useRef<HTMLElement | null>(null);
+  const isAsked = useAskedFigure() === id;
+  useEffect(() => {
+    if (isAsked) block.current?.scrollIntoView({ block: 'center' });
+  }, [isAsked]);
   return (
-    <section className="working" aria-label={`Working: ${label}`}>
+    <section className="working" aria-label={`Working: ${label}`} ref={block}>
       <p className="top">
         <span className="num">
           <b>{formatNumber(value)}</b>

@@ -12,6 +12,10 @@ export interface MarginMap {
   levelsKvar: number[];
   /** orders with a limit, ascending */
   ordersH: number[];
+  /** limit of each order [% of nominal] */
+  limitPct: number[];
+  /** [level][order], the worst voltage [% of nominal] */
+  voltagePct: number[][];
   /** [level][order], % of the limit */
   sharePct: number[][];
 }
@@ -37,13 +41,19 @@ export function marginMap(
     const limitPct = limits.orderPct(orderH);
     return limitPct === null ? [] : [{ i, orderH, limitPct }];
   });
-  const sharePct = levels.map(() => judged.map(() => 0));
+  const worstV = levels.map(() => judged.map(() => 0));
   const phaseV = model.nominalV / Math.sqrt(3);
   eachFlow(model, bankModel(model, bank, levels), (flow) => {
-    const row = sharePct[flow.level]!;
-    for (const [k, { i, limitPct }] of judged.entries()) {
-      for (const { voltageV } of flow.buses) row[k] = Math.max(row[k]!, (1e4 * voltageV[i]!) / phaseV / limitPct);
+    const row = worstV[flow.level]!;
+    for (const [k, { i }] of judged.entries()) {
+      for (const { voltageV } of flow.buses) row[k] = Math.max(row[k]!, voltageV[i]!);
     }
   });
-  return { levelsKvar: levels.map((level) => level.levelKvar), ordersH: judged.map(({ orderH }) => orderH), sharePct };
+  return {
+    levelsKvar: levels.map((level) => level.levelKvar),
+    ordersH: judged.map(({ orderH }) => orderH),
+    limitPct: judged.map(({ limitPct }) => limitPct),
+    voltagePct: worstV.map((row) => row.map((volt) => (100 * volt) / phaseV)),
+    sharePct: worstV.map((row) => row.map((volt, k) => (1e4 * volt) / phaseV / judged[k]!.limitPct)),
+  };
 }

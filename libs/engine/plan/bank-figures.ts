@@ -31,7 +31,7 @@ export function bankFigures(judged: Judged, bank: Bank, result: BankResult): Fig
         [each.length === 1 ? 'Q_s' : `Q_${g + 1}`, kvar, 'kvar'] as const,
       ]),
     ),
-    ...resonanceFigure(bank, result),
+    ...resonanceFigure(bank, total, result.network.shortCircuitMva),
     figure(
       'bank.voltageRisePct',
       { value: (100 * total) / (result.network.shortCircuitMva * 1000), unit: '%' },
@@ -54,14 +54,21 @@ export function bankFigures(judged: Judged, bank: Bank, result: BankResult): Fig
   ];
 }
 
-// Closed form, damping left out, all stages in: a check on the scan. Only one reactor ratio has one.
-function resonanceFigure(bank: Bank, result: BankResult): Figure[] {
+/**
+ * Parallel resonance with all stages in, closed form with damping left out: a check on the scan.
+ * @param bank the bank
+ * @param totalKvar its effective kvar [kvar]
+ * @param shortCircuitMva fault level at the bus [MVA]
+ * @returns a figure; none where the groups differ in their ratio
+ * @source method-figures
+ */
+export function resonanceFigure(bank: Bank, totalKvar: number, shortCircuitMva: number): Figure[] {
   const ratios = new Set(bank.groups.map((group) => group.reactorPct));
   const [reactorPct] = ratios;
   if (ratios.size !== 1 || reactorPct === undefined) return [];
-  const plainKvar = result.bank.effectiveKvar * (1 - reactorPct / 100);
+  const plainKvar = totalKvar * (1 - reactorPct / 100);
   const p = reactorPct / 100;
-  const value = 1 / Math.sqrt(p + plainKvar / (result.network.shortCircuitMva * 1000));
+  const value = 1 / Math.sqrt(p + plainKvar / (shortCircuitMva * 1000));
   return [
     figure(
       'network.parallelOrderClosedFormH',
@@ -70,7 +77,7 @@ function resonanceFigure(bank: Bank, result: BankResult): Figure[] {
       [
         ['p', p, ''],
         ['Q_c', plainKvar, 'kvar'],
-        ['S_k', result.network.shortCircuitMva, 'MVA'],
+        ['S_k', shortCircuitMva, 'MVA'],
       ],
     ),
   ];

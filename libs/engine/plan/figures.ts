@@ -27,7 +27,8 @@ export function figures(study: Study, bank: Bank, operated: Operated, result: Re
   ];
 }
 
-const PF = { formula: 'E_p / √(E_p^2 + E_q^2)', source: 'IEC 60050-131' };
+/** Energy factor, as every figure of one is written. */
+export const PF = { formula: 'E_p / √(E_p^2 + E_q^2)', source: 'IEC 60050-131' };
 
 function recordFigures({ record }: Result): Figure[] {
   if (record.powerFactorLagging === null || record.powerFactorNet === null) return [];
