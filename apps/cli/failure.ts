@@ -1,6 +1,6 @@
 import { writeSync } from 'node:fs';
 import { EXIT, EXIT_CODE, errorBody, faultBody } from '#libs/contract/error-body.js';
-import { Question } from '#libs/contract/question.js';
+import { Question, type QuestionReading } from '#libs/contract/question.js';
 import { describeProblem, InputProblem } from '#libs/engine/index.js';
 import { hasWritten, say, writeJson } from './output.js';
 import { fileOf } from './refused-file.js';
@@ -31,10 +31,21 @@ function inWords(problem: InputProblem): string {
 
 /** Each reading with the map that settles it, ready to be saved and given with --map. */
 function questionInWords(question: Question['questions'][number]): string {
-  const readings = question.readings.map(
-    ({ map, maxKw, activeKwh }) => `  ${JSON.stringify(map)}   would give ${activeKwh} kWh, at most ${maxKw} kW`,
-  );
-  return `${question.about}; save one of these and give it with --map:\n${readings.join('\n')}`;
+  return `${question.about}; save one of these and give it with --map:\n${question.readings.map(readingInWords).join('\n')}`;
+}
+
+/** A reading by its total, its peak and its first row: in what it differs from the others shows in one of them. */
+function readingInWords({ map, maxKw, activeKwh, firstRows }: QuestionReading): string {
+  const total = `would give ${shortened(activeKwh)} kWh, at most ${shortened(maxKw)} kW`;
+  const [beginning, kw, lagging, leading] = firstRows[0] ?? [];
+  const first =
+    beginning === undefined ? '' : `; begins ${beginning}: ${kw} kW, ${lagging} kvar lagging, ${leading} kvar leading`;
+  return `  ${JSON.stringify(map)}   ${total}${first}`;
+}
+
+/** Without the last digits of a sum, which are rounding. */
+function shortened(value: number): number {
+  return Number(value.toPrecision(12));
 }
 
 /** Tells a program that waits for JSON that there won't be an answer; written at once, because the process ends. */

@@ -72,6 +72,7 @@ export const bankSchema = z.strictObject({
       instantaneousA: quantity('instantaneousA', POSITIVE).optional(),
       breakingKa: quantity('breakingKa', POSITIVE).optional(),
       withstandKa: quantity('withstandKa', POSITIVE).optional(),
+      shortTimeKa: quantity('shortTimeKa', POSITIVE).optional(),
     })
     .optional(),
   protection: z

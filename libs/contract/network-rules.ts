@@ -6,7 +6,6 @@ const AT_A_BUS: [list: PropertyKey[], optional: boolean][] = [
   [['network', 'generators'], false],
   [['network', 'motors'], false],
   [['network', 'resistive'], false],
-  [['network', 'capacitors'], false],
   [['network', 'banks'], false],
   [['loads', 'distorting'], true],
 ];
@@ -32,6 +31,7 @@ export function networkRules(site: Readable): RuleBreach[] {
         optional && partAt(entry, 'bus') === undefined ? [] : known([...list, index, 'bus']),
       ),
     ),
+    ...capacitorRules(site, known),
     ...endRules(site, known),
     ...transformerRules(site, names),
     ...(partAt(network, 'bankBus') === undefined ? [] : known(['network', 'bankBus'])),
@@ -62,6 +62,18 @@ function unknownBus(site: Readable, path: PropertyKey[], names: ReadonlySet<stri
   // A name that is absent or no text was told by the schema already.
   if (typeof name !== 'string') return [];
   return [breach(path, `one of the buses ${[...names].map(shown).join(', ')}`, shown(name))];
+}
+
+/** Capacitors stand at a bus, or at the primary where there is one; its voltage is then needed. */
+function capacitorRules(site: Readable, known: (path: PropertyKey[]) => RuleBreach[]): RuleBreach[] {
+  const hasPrimary = listAt(site, 'supply', 'transformers').length > 0;
+  const voltage = ['network', 'primaryV'];
+  return listAt(site, 'network', 'capacitors').flatMap((entry, index) => {
+    if (textAt(entry, 'bus') !== 'primary' || !hasPrimary) return known(['network', 'capacitors', index, 'bus']);
+    if (partAt(site, ...voltage) !== undefined) return [];
+    const expected = `the voltage at the primary, where network.capacitors[${index}] stands`;
+    return [{ code: 'missing', path: voltage, expected, found: 'nothing' }];
+  });
 }
 
 function endRules(site: Readable, known: (path: PropertyKey[]) => RuleBreach[]): RuleBreach[] {

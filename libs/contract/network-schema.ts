@@ -1,7 +1,7 @@
 import * as z from 'zod';
 import { AWG_SIZES } from '#libs/engine/index.js';
 import { stageGroupSchema } from './bank-schema.js';
-import { label, listOf, NOT_NEGATIVE, POSITIVE, plain, quantity, whole } from './schema-parts.js';
+import { CAPACITOR_V, label, listOf, NOT_NEGATIVE, POSITIVE, plain, quantity, whole } from './schema-parts.js';
 
 const between = z.tuple([label(), label()], { error: 'two names of buses' });
 
@@ -54,6 +54,7 @@ export const networkSchema = z.strictObject({
     0,
     10,
   ).optional(),
+  primaryV: quantity('primaryV', CAPACITOR_V).optional(),
   bankBus: label().optional(),
   couplingPoint: label().optional(),
   transformerOut: z.boolean().optional(),

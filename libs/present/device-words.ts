@@ -106,6 +106,11 @@ const WORDS: Record<DeviceName, { device: string; met: string; need: string }> =
     need: '{least} or more',
   },
   'busbar.withstand': { device: 'busbars, peak withstand', met: '{value} peak fault current', need: '{least} or more' },
+  'busbar.shortTime': {
+    device: 'busbars, short-time withstand for 1 s',
+    met: '{value} thermal equivalent of the fault current',
+    need: '{least} or more',
+  },
   'conductor.rating': { device: 'conductors', met: '{value} fundamental, all stages', need: '{least} or more' },
   'protection.earthFault': { device: 'earth fault', met: '[earthing {value}]', need: 'cleared[ by {least}]' },
   'protection.overTemperature': {

@@ -50,6 +50,7 @@ const LABELS: Readonly<Record<string, string>> = words({
   'devices.group[*].rippleOhm': 'reactance of a stage at the ripple frequency, above 0 where it blocks',
   'devices.greatestFaultKa': 'equipment fault current, not the fault level of resonance',
   'devices.peakFaultKa': 'peak of the equipment fault current',
+  'devices.shortTimeKa': 'thermal equivalent of the equipment fault current over 1 s',
   'devices.leastFaultKa': 'least fault current, two phases',
   'devices.instantaneousMinA': 'least instantaneous setting upstream',
   'devices.cabinetHeatW': 'heat of the cabinet, at most',
@@ -108,8 +109,14 @@ export function dutyName(duty: Duty): string {
   const group = duty.group === null ? '' : say`, group\u00a0${duty.group + 1}`;
   const order = duty.orderH === null ? '' : say`, order\u00a0${formatNumber(duty.orderH, 'given')}`;
   const capacitors = duty.capacitors === undefined ? '' : `, ${plainName(duty.capacitors)}`;
-  const bus = duty.bus === undefined || duty.bus === 'primary' ? '' : say`, at ${plainName(duty.bus)}`;
-  return `${engineName(duty.name)}${group}${order}${capacitors}${bus}`;
+  return `${engineName(duty.name)}${group}${order}${capacitors}${placeOf(duty)}`;
+}
+
+// The limits at the primary say so in their names.
+function placeOf({ bus, capacitors }: Duty): string {
+  if (bus === undefined) return '';
+  if (bus !== 'primary') return say`, at ${plainName(bus)}`;
+  return capacitors === undefined ? '' : say`, at the primary`;
 }
 
 /**

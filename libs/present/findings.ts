@@ -188,6 +188,7 @@ const PLACES = [
   'levelKvar',
   'quantity',
   'bus',
+  'capacitors',
   'name',
   'register',
   'of',

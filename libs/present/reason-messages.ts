@@ -50,7 +50,7 @@ export const REASON_MESSAGES: Messages = {
     level: 'to be accepted',
     text:
       'With {levelKvar} connected the network’s parallel resonance lies at order {peakOrderH}, within {reachH} of order ' +
-      '{presentOrderH}, which is present[, fault level {faultLevelMva}][, damping load {dampingKw}].',
+      '{presentOrderH}, which is present[, seen at {bus}][, fault level {faultLevelMva}][, damping load {dampingKw}][, {standing}].',
     consequence: 'Measure the distortion at this level before it is used for long, or move the resonance.',
   },
   'plain.distortingShare': {

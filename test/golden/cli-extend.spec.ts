@@ -39,6 +39,7 @@ describe('a meter file with further ones', () => {
     expect(question.overlap).toMatchObject({ added: 672, agreed: 668, disagreed: 4, spanCount: 1 });
     expect(asked.stderr).toContain(`${files[2]}: whether the record or the further file counts in 4 intervals`);
     expect(asked.stderr).toContain('{"overlap":"later"}   would give');
+    expect(asked.stderr).toContain(`; begins ${question.readings[1].firstRows[0][0]}: `);
     for (const { map, maxKw, activeKwh } of question.readings) {
       const settled = work.run(['read', ...files, '--json', '--map', work.file(map)]);
       expect(JSON.parse(settled.stdout).record).toMatchObject({ maxKw, activeKwh, intervals: 2016 });

@@ -35,7 +35,7 @@ function supplyOf(changes: Partial<Supply['transformers'][number]> = {}, rest: P
 
 function currentOf(supply: Supply, highestV = 424, loads = quiet, shortCircuitMinMva = 10) {
   const model = networkModel(supply, loads, 400, 0);
-  return faultCurrent(supply, loads, { nominalV: 400, highestV, shortCircuitMinMva }, model);
+  return faultCurrent(supply, loads, { nominalV: 400, highestV, shortCircuitMinMva, frequencyHz: 50 }, model);
 }
 
 describe('greatest fault current behind a transformer of 1 000 kVA, 6 %, at 400 V', () => {
@@ -82,6 +82,20 @@ describe('peak of the fault current', () => {
     expect(Math.abs(found.kappa - kappa)).toBeLessThanOrEqual(0.005); // the curve is read to two decimals
     expect(found.peakKa).toBeCloseTo(found.kappa * Math.SQRT2 * found.greatestKa, 12);
   });
+});
+
+describe('thermal equivalent over 1 s', () => {
+  // The direct part at its greatest, √2·I″·(κ−1)^(2ft), heats 2·I″²·∫(κ−1)^(4ft) dt beside I″² of the alternating part.
+  it.each([0, 5.97, 26.8])(
+    'with a load loss of %d kW heats as alternating and decaying part together',
+    (loadLossKw) => {
+      const { thermalKa, greatestKa, kappa } = currentOf(supplyOf({ loadLossKw }));
+      const steps = 200_000;
+      let heat = 0;
+      for (let k = 0; k < steps; k++) heat += (1 + 2 * (kappa - 1) ** ((4 * 50 * (k + 0.5)) / steps)) / steps;
+      expect(thermalKa / greatestKa / Math.sqrt(heat)).toBeCloseTo(1, 6);
+    },
+  );
 });
 
 describe('least fault current', () => {

@@ -9,6 +9,7 @@ import {
   firmVerdict,
   type NetworkInput,
   networkScene,
+  PeakFinder,
   type Site,
   settleControl,
 } from '#libs/engine/index.js';
@@ -102,6 +103,48 @@ describe('capacitors that stand in the network apart from the bank', () => {
       'network capacitor current',
       'network capacitor reactive power',
     ]);
+  });
+});
+
+describe('capacitors at the transformers’ primary', () => {
+  const PRIMARY_V = 10_000;
+  const highSide = { name: 'yard', bus: 'primary', count: 1, ratedKvar: 900, ratedV: 11_000 };
+  const withYard = siteWith({ capacitors: [highSide], primaryV: PRIMARY_V }, 300);
+  const site = {
+    ...withYard,
+    supply: { ...withYard.supply, faultLevelMva: { max: 40, min: 40 } },
+    loads: { ...withYard.loads, backgroundPct: [{ orderH: 7, pct: 2 }], distorting: [] },
+  };
+
+  it('resonate with the network at √(S_k/Q), Q at the voltage there', () => {
+    const scene = networkScene({ ...site, bank: { stages: [] }, network: { ...site.network!, transformerOut: false } });
+    const finder = new PeakFinder(scene.model, scene.bank);
+    const { orderH } = finder.greatest(new Int32Array(), scene.model.corners.corners[0]!, 1)!;
+    const kvar = highSide.ratedKvar * (PRIMARY_V / highSide.ratedV) ** 2;
+    // the rest of the site is open: the source alone, its resistance a few parts in a thousand of the order
+    expect(orderH / Math.sqrt(40_000 / kvar)).toBeCloseTo(1, 2);
+  });
+
+  it('are judged by the voltage there, in its own volts and amperes', () => {
+    const row = rowOf(judged(site).duties, 'network capacitor current');
+    expect(row).toMatchObject({ capacitors: 'yard', bus: 'primary' });
+    const rated = (highSide.ratedKvar * 1000) / (Math.sqrt(3) * highSide.ratedV);
+    const factor = row.corner!.networkCapacitanceFactor ?? 1;
+    expect(row.limit! / (1.3 * factor * rated)).toBeCloseTo(1, 12);
+    const circuit = { tag: 'q', corner: row.corner!, toleranceSign: 0, counts: [1], drive: 'background' as const };
+    const share = slowCircuit(busesNetlist(site, circuit, 7), 7 * site.frequencyHz).get('primq')!;
+    const siemens = (factor * highSide.ratedKvar * 1000) / highSide.ratedV ** 2;
+    const seventhV = (share * 0.02 * PRIMARY_V) / Math.sqrt(3);
+    const first = (siemens * ((410 / NOMINAL_V) * PRIMARY_V)) / Math.sqrt(3);
+    expect(row.value / Math.hypot(first, seventhV * 7 * siemens)).toBeCloseTo(1, 9);
+  });
+
+  it('need the voltage there, and a transformer', () => {
+    const { network, ...rest } = site;
+    const { primaryV: _, ...without } = network!;
+    expect(() => readSite({ ...rest, network: without })).toThrow(/network\.primaryV/);
+    const supply = { ...site.supply, transformers: [] };
+    expect(() => readSite({ ...site, supply })).toThrow(/network\.capacitors\[0\]\.bus/);
   });
 });
 

@@ -132,12 +132,20 @@ const combined = (parts: number[], orderH: number): number => {
   return parts.reduce((sum, part) => sum + part ** alpha, 0) ** (1 / alpha);
 };
 
+/** Harmonic voltages of one order [% of nominal]. */
+interface BusPct {
+  buses: number[];
+  /** 0 where there is no transformer */
+  primary: number;
+}
+
 // Every bus's voltages in one standing, every load alone and the background alone.
-function busVoltagesPct(site: Site, scene: Omit<Parameters<typeof busesNetlist>[1], 'tag' | 'drive'>): number[][] {
+function busVoltagesPct(site: Site, scene: Omit<Parameters<typeof busesNetlist>[1], 'tag' | 'drive'>): BusPct[] {
   const phaseV = site.bus.nominalV / Math.sqrt(3);
+  const nodes = [...site.network!.buses.map((_, k) => `n${k}q`), 'primq'];
   const alone = (drive: Drive, orderH: number): number[] => {
     const volts = slowCircuit(busesNetlist(site, { ...scene, tag: 'q', drive }, orderH), orderH * site.frequencyHz);
-    return site.network!.buses.map((_, k) => volts.get(`n${k}q`)!);
+    return nodes.map((node) => volts.get(node) ?? 0);
   };
   return ORDERS_H.map((orderH) => {
     const drives = site.loads!.distorting!.map((load) => ({
@@ -146,12 +154,13 @@ function busVoltagesPct(site: Site, scene: Omit<Parameters<typeof busesNetlist>[
     }));
     const background = site.loads!.backgroundPct!.find((order) => order.orderH === orderH)?.pct ?? 0;
     if (background > 0) drives.push({ volts: alone('background', orderH), by: (background / 100) * phaseV });
-    return site.network!.buses.map((_, bus) =>
+    const pct = nodes.map((_, node) =>
       combined(
-        drives.map(({ volts, by }) => (100 * volts[bus]! * by) / phaseV),
+        drives.map(({ volts, by }) => (100 * volts[node]! * by) / phaseV),
         orderH,
       ),
     );
+    return { buses: pct.slice(0, -1), primary: pct[pct.length - 1]! };
   });
 }
 
@@ -178,7 +187,7 @@ function networkObjections(random: Chance): Objections {
         passed(
           scene.site,
           name,
-          pct.map((ofOrder) => ofOrder[bus]!),
+          pct.map((ofOrder) => ofOrder.buses[bus]!),
         ),
       ),
       ...overloaded(scene, corners[index]!, pct),
@@ -188,7 +197,7 @@ function networkObjections(random: Chance): Objections {
 }
 
 // What the network's own capacitors carry at those voltages, held against their nameplates.
-function overloaded({ site, model }: NetworkScene, { corner, network }: CornerCase, pct: number[][]): string[] {
+function overloaded({ site, model }: NetworkScene, { corner, network }: CornerCase, pct: BusPct[]): string[] {
   const { capacitanceFactor, inductanceFactor } = model.corners.networks[network]!.state!.tolerance ?? NAMEPLATE;
   expect([corner.networkCapacitanceFactor ?? 1, corner.networkInductanceFactor ?? 1]).toEqual([
     capacitanceFactor,
@@ -199,7 +208,11 @@ function overloaded({ site, model }: NetworkScene, { corner, network }: CornerCa
     const slow = { exponent: site.supply.resistanceExponent, capacitanceFactor, inductanceFactor };
     const ohm = (h: number): number => group.ratedV ** 2 / (group.ratedKvar * 1000) / capacitanceFactor / h;
     const amperes = ORDERS_H.map(
-      (h, i) => ((pct[i]![bus]! / 100) * site.nominalV * admittanceOfStage(slow, group, h).size) / Math.sqrt(3),
+      (h, i) =>
+        (((bus === 'primary' ? pct[i]!.primary : pct[i]!.buses[bus]!) / 100) *
+          site.nominalV *
+          admittanceOfStage(slow, group, h).size) /
+        Math.sqrt(3),
     );
     const first = (site.highestV / Math.sqrt(3)) * admittanceOfStage({ ...slow, exponent: 0 }, group, 1).size;
     const volts = ORDERS_H.map((h, i) => Math.sqrt(3) * amperes[i]! * ohm(h));

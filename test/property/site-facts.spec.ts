@@ -80,6 +80,7 @@ describe('the table of devices', () => {
       'avoid',
     ],
     ['busbars that do not stand its peak', { mainDevice: { withstandKa: 40 } }, 'busbar.withstand', 'avoid'],
+    ['busbars that do not carry it for 1 s', { mainDevice: { shortTimeKa: 10 } }, 'busbar.shortTime', 'avoid'],
     ['a conductor under 1.43 times the current', { conductorA: 250 }, 'conductor.rating', 'avoid'],
     ['no over-pressure disconnection', { protection: { overPressure: false } }, 'protection.overPressure', 'watch'],
     ['an earthed star, which triplens flow through', { connection: 'earthedStar' }, 'capacitor.connection', 'watch'],

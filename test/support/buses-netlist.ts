@@ -164,7 +164,10 @@ class Writer {
         const name = set.name ?? `capacitors ${g + 1}`;
         const fewer = this.#standing.find((part) => part.endsWith(` of ${name}`));
         const count = fewer === undefined ? set.count : Number.parseInt(fewer, 10);
-        return this.#beside(`f${g}`, this.#node(set.bus), count, ohm(set));
+        if (set.bus !== 'primary') return this.#beside(`f${g}`, this.#node(set.bus), count, ohm(set));
+        const { r, x, c } = ohm(set);
+        const square = (this.#site.bus.nominalV / network!.primaryV!) ** 2;
+        return this.#beside(`f${g}`, `prim${t}`, count, { r: r * square, x: x * square, c: c * square });
       }),
       ...(network!.banks ?? []).flatMap(({ name = '', bus, stages }, k) => {
         const counts = this.#stagesIn(name === '' ? `bank ${k + 1}` : name, stages);

@@ -12,7 +12,7 @@ export function madeBusNames(count: number): string[] {
 
 /**
  * A site of chance with a network of 1 to 8 buses: radial or ringed by cables, couplers open, closed or either,
- * generators, motors, resistive loads, 0 to 3 sets of capacitors and a further bank besides the bank, transformers in parallel or each on
+ * generators, motors, resistive loads, 0 to 3 sets of capacitors, some more at the primary and a further bank besides the bank, transformers in parallel or each on
  * its own bus. It always stands: every bus has a way to the supply.
  * @param random where the numbers come from
  * @returns the site, its distorting loads and background not given
@@ -42,7 +42,7 @@ export function madeBuses(random: Chance): Site {
       arrangement: 'parallel',
       transformers,
     },
-    network: madeNetworkInput(random, { names, fed, nominalV, transformers: transformers.length }),
+    network: withPrimary(random, madeNetworkInput(random, { names, fed, nominalV, transformers: count }), count),
     loads: {
       motorSharePct: random.oneOf([0, 60, 100]),
       distorting: [],
@@ -101,6 +101,16 @@ function madeNetworkInput(random: Chance, { names, fed, nominalV, transformers }
     transformerOut: transformers > 1 && random.next() < 0.4,
     ...(random.next() < 0.2 ? { banks: [{ bus: at(), stages: madeFurtherStages(random, nominalV) }] } : {}),
   };
+}
+
+// Some capacitors at the high-voltage side, where there is one.
+function withPrimary(random: Chance, network: NetworkInput, transformers: number): NetworkInput {
+  if (transformers === 0 || random.next() >= 0.25) return network;
+  const [primaryV, atPrimary] = [
+    10_000,
+    { ...madeStages(random, 10_000), count: 1, ratedKvar: random.between(50, 400) },
+  ];
+  return { ...network, primaryV, capacitors: [...network.capacitors!, { ...atPrimary, bus: 'primary' }] };
 }
 
 function madeFurtherStages(random: Chance, nominalV: number): StageGroupInput[] {

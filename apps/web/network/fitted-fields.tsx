@@ -61,6 +61,7 @@ function BankFields() {
         <BankQuantityField path={`${device}.instantaneousA`} label="instantaneous" unit="A" />
         <BankQuantityField path={`${device}.breakingKa`} label="breaking capacity" unit="kA" />
         <BankQuantityField path={`${device}.withstandKa`} label="busbars, peak" unit="kA" />
+        <BankQuantityField path={`${device}.shortTimeKa`} label="busbars, 1 s" unit="kA" />
         <BankQuantityField path="bank.conductorA" label="conductors carry" unit="A" />
         <BankQuantityField path="bank.interStageUh" label="between stages" unit="µH" otherwise="2, customary" />
         <BankChoiceField path={`${protection}.earthFault`} label="earth fault" choices={FITTED} />

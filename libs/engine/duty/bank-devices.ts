@@ -79,6 +79,13 @@ function mainDeviceRows(bank: Bank, basis: BankDeviceBasis): DeviceRow[] {
       least: fault.peakKa,
       fitted: given.withstandKa ?? null,
     }),
+    deviceRow({
+      device: 'busbar.shortTime',
+      ...faultRow,
+      value: fault.thermalKa,
+      least: fault.thermalKa,
+      fitted: given.shortTimeKa ?? null,
+    }),
     deviceRow({ device: 'conductor.rating', ...rated, fitted: facts.bank?.conductorA ?? null }),
   ];
 }

@@ -22,6 +22,7 @@ export const DEVICE_NAMES = [
   'mainDevice.instantaneous',
   'mainDevice.breaking',
   'busbar.withstand',
+  'busbar.shortTime',
   'conductor.rating',
   'protection.earthFault',
   'protection.overTemperature',

@@ -39,7 +39,7 @@ export function devices(
   const { judge, judgement, control, conductorMinA, facts } = basis;
   const { shortCircuitMinMva } = summarizeNetwork(model, []);
   const voltages = { ...judge.voltages, shortCircuitMinMva };
-  const fault = faultCurrent(judge.supply, judge.loads, voltages, model);
+  const fault = faultCurrent(judge.supply, judge.loads, { ...voltages, frequencyHz: judge.frequencyHz }, model);
   const demand = bankDemand(model, bank, levels, { ...voltages, rules: judge.rules });
   const heat = cabinetHeat(bank, judgement.charge, demand, facts.place);
   const shared = { rules: judge.rules, facts, ...voltages };

@@ -32,17 +32,21 @@ export interface FaultCurrent {
   /** factor of the peak */
   kappa: number;
   peakKa: number;
+  /** heat of the decaying part over 1 s, as a share of the alternating part's */
+  decayShare: number;
+  /** constant current that heats as much in 1 s [kA] */
+  thermalKa: number;
   /** two-phase, at the least fault level [kA] */
   leastKa: number;
 }
 
 /**
  * Greatest and least fault current at the bank's bus: I″ = c·U/(√3·|c_Q·Z_Q + Z_T|) + c·5·I_rM, κ = 1.02 + 0.98·e^(−3R/X),
- * i_p = κ·√2·I″; the transformer's u_k is taken less its tolerance, in place of the correction factor K_T. In a network of
+ * i_p = κ·√2·I″, I_th = I″·√(m + 1) over 1 s, as far from any generator; the transformer's u_k is taken less its tolerance, in place of the correction factor K_T. In a network of
  * several buses c·U/(√3·|Z|) of the strongest standing, the network's own factor left out: an upper bound.
  * @param supply settled supply
  * @param loads settled loads; the motors' share of the damping load counts, and the network's motors
- * @param site bus voltages [V] and least fault level at the bus [MVA]
+ * @param site bus voltages [V], least fault level at the bus [MVA], frequency [Hz]
  * @param model the network without the bank
  * @returns currents [kA] and what they are made of
  * @source iec-60909-0
@@ -50,7 +54,7 @@ export interface FaultCurrent {
 export function faultCurrent(
   supply: Supply,
   loads: Loads,
-  site: { nominalV: number; highestV: number; shortCircuitMinMva: number },
+  site: { nominalV: number; highestV: number; shortCircuitMinMva: number; frequencyHz: number },
   model: NetworkModel,
 ): FaultCurrent {
   const { nominalV, highestV } = site;
@@ -64,6 +68,7 @@ export function faultCurrent(
   const motorKa = (cMax * MOTOR.lockedRotorRatio * motorKw) / (Math.sqrt(3) * nominalV * MOTOR.efficiencyTimesFactor);
   const greatestKa = (cMax * nominalV) / (Math.sqrt(3) * Math.hypot(rOhm, xOhm)) / 1000 + motorKa;
   const kappa = 1.02 + 0.98 * Math.exp((-3 * rOhm) / xOhm);
+  const decayShare = decayHeatShare(kappa, site.frequencyHz);
   return {
     cMax,
     cMin,
@@ -75,8 +80,19 @@ export function faultCurrent(
     greatestKa,
     kappa,
     peakKa: kappa * Math.SQRT2 * greatestKa,
+    decayShare,
+    thermalKa: greatestKa * Math.sqrt(decayShare + 1),
     leastKa: (cMin * nominalV) / (2 * weakestOhm) / 1000,
   };
+}
+
+/** Short-time ratings are stated for this long [s]. */
+const SHORT_TIME_S = 1;
+
+// m = (e^(4·f·T·ln(κ−1)) − 1)/(2·f·T·ln(κ−1)), 2 where nothing decays.
+function decayHeatShare(kappa: number, frequencyHz: number): number {
+  const exponent = 2 * frequencyHz * SHORT_TIME_S * Math.log(Math.min(1, kappa - 1));
+  return exponent === 0 ? 2 : Math.expm1(2 * exponent) / exponent;
 }
 
 function strongest(supply: Supply, nominalV: number, cMax: number, model: NetworkModel): [number, number] {

@@ -73,13 +73,13 @@ export class NetworkCapacitorDuties {
     this.#known = known;
     this.#capacitors = model.nodal?.topology.capacitors ?? [];
     const rules = CAPACITOR_RULES[basis.rules];
-    this.#standings = this.#capacitors.map(({ group }, c) => {
+    this.#standings = this.#capacitors.map(({ group, turns }, c) => {
       const made = new Map<string, Standing>();
       return model.corners.networks.map(({ state }) => {
         if (state === null || state.capacitorsIn[c] === 0) return null;
         const factors = state.tolerance ?? NAMEPLATE;
         const key = `${factors.capacitanceFactor} ${factors.inductanceFactor}`;
-        const standing = made.get(key) ?? standingOf(model, group, { factors, rules, voltages: basis.voltages });
+        const standing = made.get(key) ?? standingOf(model, group, { factors, rules, turns, voltages: basis.voltages });
         made.set(key, standing);
         return standing;
       });
@@ -108,7 +108,8 @@ export class NetworkCapacitorDuties {
       const row = this.#rows[c]![quantity];
       const byTheBank = value - without[quantity] > BASELINE_SHARE * limit;
       if (!row.counts(value / limit, this.#verdict(value / limit, row.head.nearRatio, byTheBank))) continue;
-      const bus = this.#model.buses[this.#capacitors[c]!.bus]!;
+      const at = this.#capacitors[c]!.bus;
+      const bus = at === 'primary' ? at : this.#model.buses[at]!;
       row.keep(value, limit, { levelKvar: flow.levelKvar, corner: flow.corner.corner, orderH: null, bus });
     }
   }
@@ -122,7 +123,8 @@ export class NetworkCapacitorDuties {
   }
 
   #carried(c: number, { siemens, capacitiveOhm, highestV, fundamentalA }: Standing, flow: Flow): Carried {
-    const { voltageV } = flow.buses[this.#capacitors[c]!.bus]!;
+    const { bus, turns } = this.#capacitors[c]!;
+    const { voltageV } = bus === 'primary' ? flow.primary! : flow.buses[bus]!;
     let voltageSquare = highestV * highestV;
     let voltageSum = highestV;
     let currentSquare = fundamentalA * fundamentalA;
@@ -136,9 +138,9 @@ export class NetworkCapacitorDuties {
       powerVa += harmonicV * currentA;
     }
     return {
-      voltage: Math.sqrt(voltageSquare),
-      crest: Math.SQRT2 * voltageSum,
-      current: Math.sqrt(currentSquare),
+      voltage: turns * Math.sqrt(voltageSquare),
+      crest: turns * Math.SQRT2 * voltageSum,
+      current: Math.sqrt(currentSquare) / turns,
       power: (SQRT3 * powerVa) / 1000,
     };
   }
@@ -167,7 +169,12 @@ function rowsOf(source: string): Record<Quantity, DutyRow> {
 function standingOf(
   model: NetworkModel,
   group: StageGroup,
-  { factors, rules, voltages }: { factors: ToleranceFactors; rules: CapacitorRules; voltages: DutyVoltages },
+  {
+    factors,
+    rules,
+    turns,
+    voltages,
+  }: { factors: ToleranceFactors; rules: CapacitorRules; turns: number; voltages: DutyVoltages },
 ): Standing {
   const branch = stageBranch(group, factors, model.corners.networks[0]!.path.resistanceExponent);
   const { re, im } = stageAdmittance(branch, model.excitation.ordersH);
@@ -179,9 +186,9 @@ function standingOf(
     highestV: voltages.highestV / leftShare,
     fundamentalA: voltages.highestV / SQRT3 / (branch.capacitiveOhm * leftShare),
     limits: {
-      voltage: rules.highestVoltageRatio * group.ratedV,
-      crest: rules.crestVoltageRatio === null ? null : rules.crestVoltageRatio * Math.SQRT2 * group.ratedV,
-      current: rules.currentRatio * ratedA(group) * growth,
+      voltage: turns * rules.highestVoltageRatio * group.ratedV,
+      crest: rules.crestVoltageRatio === null ? null : turns * rules.crestVoltageRatio * Math.SQRT2 * group.ratedV,
+      current: (rules.currentRatio * ratedA(group) * growth) / turns,
       power: rules.reactivePowerRatio === null ? null : rules.reactivePowerRatio * group.ratedKvar,
     },
   };

@@ -67,6 +67,8 @@ export interface MainDevice {
   breakingKa?: number;
   /** peak withstand of the bank's busbars [kA] */
   withstandKa?: number;
+  /** what the bank's busbars carry for 1 s [kA] */
+  shortTimeKa?: number;
 }
 
 /** What disconnects the bank when something is wrong; true where fitted, false where not. */

@@ -98,7 +98,7 @@ export function siteNetwork(
     nodal,
     buses: topology === null ? ['main'] : topology.buses,
     bankBus: topology?.bankBus ?? 0,
-    primary: site.primary === true && supply.transformers.length > 0,
+    primary: (site.primary === true || capacitorsAtPrimary(topology)) && supply.transformers.length > 0,
   };
   model.atOrders = corners.networks.map((_, network) => tableAt(model, network, present.ordersH));
   model.drives = model.atOrders.map((table) => drive(table, present));
@@ -165,6 +165,11 @@ function nodalModel(parts: {
     tables: cases.map((nodal) => nodalTable(nodal, present.ordersH)),
     injected: topology.buses.map((name, bus) => injectedAt(loads, present, { name, first: bus === 0 })),
   };
+}
+
+// Capacitors at the primary are judged by the voltage there.
+function capacitorsAtPrimary(topology: Topology | null): boolean {
+  return topology?.capacitors.some(({ bus }) => bus === 'primary') ?? false;
 }
 
 // A corner's damping is the whole site's, so the undamped one has neither the damping load nor what is listed.

@@ -46,8 +46,8 @@ describe('the standings of a network', () => {
     const topology = row(1, {
       generators: [{ name: 'set', bus: 0, rOhm: 0.01, xOhm: 0.1, state: 'either' }],
       capacitors: [
-        { name: 'old bank', bus: 0, group: group(2), switched: true },
-        { name: 'fixed', bus: 0, group: group(3), switched: false },
+        { name: 'old bank', bus: 0, group: group(2), switched: true, turns: 1 },
+        { name: 'fixed', bus: 0, group: group(3), switched: false, turns: 1 },
       ],
     });
     const states = networkStates(topology);
@@ -62,6 +62,7 @@ describe('the standings of a network', () => {
       bus: 0,
       group: each,
       switched: false,
+      turns: 1,
     }));
     // 0, 25, 50 twice (two of 25 or one of 50, one admittance), 75, 100
     const vectors = [

@@ -74,7 +74,7 @@ function refuseTooMany(count: number): void {
     {
       code: 'too-many-levels',
       path: 'network',
-      expected: `at most ${MOST_STATES} ways for couplers, generators, capacitors and transformers to stand`,
+      expected: `at most ${MOST_STATES} ways for couplers, generators, capacitors, further banks and transformers to stand`,
       found: `${count}`,
     },
   ]);

@@ -36,7 +36,7 @@ const topology: Topology = {
   generators: [{ name: 'g', bus: 2, rOhm: 0.006, xOhm: 0.04, state: 'either' }],
   motorKw: Float64Array.of(0, 0, 100),
   resistiveKw: Float64Array.of(0, 40, 0),
-  capacitors: [{ name: 'old', bus: 2, group, switched: true }],
+  capacitors: [{ name: 'old', bus: 2, group, switched: true, turns: 1 }],
   banks: [],
   transformerBus: [0, 1],
   bankBus: 0,

@@ -64,7 +64,7 @@ export function nodalCase(topology: Topology, state: NetworkState, path: SupplyP
   const sourceNode = hasPrimary ? busNodes : busNode[0]!;
   const branches = [
     ...seriesBranches(topology, state, { path, busNode, sourceNode }),
-    ...shuntBranches(topology, state, busNode),
+    ...shuntBranches(topology, state, { busNode, sourceNode }),
   ];
   const conductance = new Float64Array(hasPrimary ? busNodes + 1 : busNodes);
   for (const load of dampingLoads(topology, damping)) {
@@ -109,7 +109,11 @@ function seriesBranches(
   return [...transformers, ...cables];
 }
 
-function shuntBranches(topology: Topology, state: NetworkState, busNode: Int32Array): NodalBranch[] {
+function shuntBranches(
+  topology: Topology,
+  state: NetworkState,
+  { busNode, sourceNode }: { busNode: Int32Array; sourceNode: number },
+): NodalBranch[] {
   const generators = topology.generators
     .filter((_, i) => state.runningGenerators[i])
     .map(({ bus, rOhm, xOhm }) => ({ from: busNode[bus]!, to: -1, steadyOhm: 0, rOhm, xOhm, capacitiveOhm: 0 }));
@@ -119,7 +123,7 @@ function shuntBranches(topology: Topology, state: NetworkState, busNode: Int32Ar
     const ohm = stageBranch(group, state.tolerance ?? NAMEPLATE, 0);
     return [
       {
-        from: busNode[bus]!,
+        from: bus === 'primary' ? sourceNode : busNode[bus]!,
         to: -1,
         steadyOhm: 0,
         rOhm: ohm.resistanceOhm / count,

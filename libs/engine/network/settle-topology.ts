@@ -2,7 +2,7 @@ import type { Bank, StageGroup, StageGroupInput } from '../layout/bank.js';
 import { bankLevels } from '../layout/levels.js';
 import { InputProblem, type Problem } from '../problem.js';
 import { bankStates, stageKinds } from './stage-kinds.js';
-import type { FurtherBank, NetworkInput, Topology } from './topology.js';
+import type { FurtherBank, NetworkCapacitors, NetworkInput, Topology } from './topology.js';
 
 /** What a topology is settled with. */
 export interface TopologyBasis {
@@ -69,12 +69,18 @@ export function settleTopology(input: NetworkInput, basis: TopologyBasis): Topol
 }
 
 function capacitorsOf(input: NetworkInput, names: Names, basis: TopologyBasis): Pick<Topology, 'capacitors' | 'banks'> {
-  const capacitors = (input.capacitors ?? []).map((capacitor, i) => ({
-    name: capacitor.name ?? `capacitors ${i + 1}`,
-    bus: names.at(capacitor.bus, `network.capacitors[${i}].bus`),
-    group: basis.group(capacitor, `network.capacitors[${i}]`),
-    switched: capacitor.switched ?? false,
-  }));
+  const capacitors = (input.capacitors ?? []).map((capacitor, i): NetworkCapacitors => {
+    const path = `network.capacitors[${i}]`;
+    const group = basis.group(capacitor, path);
+    const head = { name: capacitor.name ?? `capacitors ${i + 1}`, switched: capacitor.switched ?? false };
+    if (capacitor.bus !== 'primary' || basis.transformerBuses.length === 0) {
+      return { ...head, bus: names.at(capacitor.bus, `${path}.bus`), group, turns: 1 };
+    }
+    if (input.primaryV === undefined) names.problems.push(missingPrimary(path));
+    // X_C referred to the buses is that of the same kvar at the voltage of the buses.
+    const turns = (input.primaryV ?? basis.nominalV) / basis.nominalV;
+    return { ...head, bus: 'primary', group: { ...group, ratedV: group.ratedV / turns }, turns };
+  });
   const banks: FurtherBank[] = [];
   for (const [i, further] of (input.banks ?? []).entries()) {
     const path = `network.banks[${i}]`;
@@ -84,10 +90,15 @@ function capacitorsOf(input: NetworkInput, names: Names, basis: TopologyBasis): 
     banks.push({ name, bus, firstEntry: capacitors.length, vectors: furtherStates(groups, basis.nominalV) });
     for (const [g, group] of groups.entries()) {
       const part = groups.length === 1 ? name : `${name}, group ${g + 1}`;
-      capacitors.push({ name: part, bus, group, switched: false });
+      capacitors.push({ name: part, bus, group, switched: false, turns: 1 });
     }
   }
   return { capacitors, banks };
+}
+
+function missingPrimary(path: string): Problem {
+  const expected = `the voltage at the primary, where ${path} stands`;
+  return { code: 'missing', path: 'network.primaryV', expected, found: 'nothing' };
 }
 
 // What the network can tell apart of a further bank's levels.

@@ -42,6 +42,7 @@ export interface BusLoadInput {
 /** Capacitors that stand in the network already, fixed or switched apart from the bank. */
 export interface CapacitorInput extends StageGroupInput {
   name?: string;
+  /** a bus, or "primary" for the high-voltage side of the transformers; rated at the voltage there */
   bus: string;
   /** every count from 0 to all is judged; otherwise all are in */
   switched?: boolean;
@@ -64,6 +65,8 @@ export interface NetworkInput {
   resistive?: BusLoadInput[];
   capacitors?: CapacitorInput[];
   banks?: FurtherBankInput[];
+  /** nominal voltage at the transformers' primary, line to line, where capacitors stand there [V] */
+  primaryV?: number;
   /** bus the bank stands at; the first where absent */
   bankBus?: string;
   /** bus whose voltage the limits are held against, or "primary"; where absent the primary if the meter stands there, else the bank's bus */
@@ -98,6 +101,17 @@ export interface Generator {
   state: GeneratorInput['state'];
 }
 
+/** Capacitors that stand in the network apart from the bank. */
+export interface NetworkCapacitors {
+  name: string;
+  bus: number | 'primary';
+  /** referred to the bus voltage */
+  group: StageGroup;
+  switched: boolean;
+  /** voltage where they stand over that of the buses: what they carry is by this more volts and fewer amperes */
+  turns: number;
+}
+
 /** A further bank: entries of the network's capacitors that are switched together. */
 export interface FurtherBank {
   name: string;
@@ -119,7 +133,7 @@ export interface Topology {
   /** resistive load per bus [kW] */
   resistiveKw: Float64Array;
   /** those of further banks last, one entry a group */
-  capacitors: { name: string; bus: number; group: StageGroup; switched: boolean }[];
+  capacitors: NetworkCapacitors[];
   banks: FurtherBank[];
   /** bus of each transformer, in the order of the supply; empty where the source stands at the first bus */
   transformerBus: number[];

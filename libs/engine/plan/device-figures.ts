@@ -112,6 +112,10 @@ function faultFigures(judged: Judged, fault: FaultCurrent): Figure[] {
       ['κ', fault.kappa, ''],
       ['I_k', fault.greatestKa, 'kA'],
     ]),
+    figure('devices.shortTimeKa', { value: fault.thermalKa, unit: 'kA' }, { formula: 'I_k · √(m + 1)', ...edition }, [
+      ['I_k', fault.greatestKa, 'kA'],
+      ['m', fault.decayShare, ''],
+    ]),
     figure('devices.leastFaultKa', { value: fault.leastKa, unit: 'kA' }, { formula: 'c / 2 · U / Z', ...edition }, [
       ['c', fault.cMin, ''],
       ['U', nominalV, 'V'],

@@ -37,7 +37,10 @@ function dutyReason(code: string, duty: Duty): Remark {
   if (duty.levelKvar !== null) values.levelKvar = duty.levelKvar;
   if (duty.orderH !== null) values.orderH = duty.orderH;
   if (duty.bus !== undefined && duty.bus !== 'primary') values.bus = duty.bus;
-  if (duty.capacitors !== undefined) values.capacitors = duty.capacitors;
+  if (duty.capacitors !== undefined) {
+    values.capacitors = duty.capacitors;
+    if (duty.bus === 'primary') values.bus = 'the primary';
+  }
   if (duty.corner !== null) Object.assign(values, duty.corner);
   return remark(code, values, { unit: duty.unit, source: duty.source });
 }
@@ -52,8 +55,9 @@ function networkReasons(judged: Judged, bank: Bank, judgement: Judgement): Remar
   const found: Remark[] = [];
   const { nearPeak, distortingSharePct, ripple } = judgement;
   if (nearPeak !== null) {
-    const { levelKvar, corner, peakOrderH, presentOrderH } = nearPeak;
-    found.push(remark('peak.near', { levelKvar, peakOrderH, presentOrderH, reachH: PEAK_REACH_H, ...corner }));
+    const { levelKvar, corner, peakOrderH, presentOrderH, bus } = nearPeak;
+    const values = { levelKvar, peakOrderH, presentOrderH, reachH: PEAK_REACH_H, ...corner };
+    found.push(remark('peak.near', judged.site.topology === null ? values : { ...values, bus }));
   }
   if (distortingSharePct !== null) {
     found.push(remark('plain.distortingShare', { sharePct: distortingSharePct }, { unit: '%', source: 'practice' }));

@@ -1,4 +1,4 @@
-import type { MeterChannel } from './meter-channel.js';
+import type { MeterChannel, RowNumbers } from './meter-channel.js';
 
 /** Which of two values for one moment counts. */
 export type Keep = 'first' | 'last';
@@ -7,7 +7,7 @@ export type Keep = 'first' | 'last';
 export interface ChannelPoints {
   beginS: Float64Array;
   values: Float64Array;
-  rowNumber: Int32Array;
+  rowNumber: RowNumbers;
   /** points dropped because another of the same moment says the same */
   duplicates: number;
   /** points of a moment that has another value already */
@@ -17,24 +17,27 @@ export interface ChannelPoints {
 }
 
 /**
- * Puts the points of a channel in time order.
+ * Puts the points of a channel in time order; the channel's own columns where they are already.
  * @param channel as read
  * @param keep which of two different values for one moment counts
  */
 export function orderedPoints(channel: MeterChannel, keep: Keep): ChannelPoints {
   const { count, beginS, values, rowNumber } = channel;
-  const order = new Int32Array(count);
   let sorted = true;
-  for (let i = 0; i < count; i++) {
-    order[i] = i;
-    if (i > 0 && beginS[i]! <= beginS[i - 1]!) sorted = false;
+  for (let i = 1; i < count && sorted; i++) sorted = beginS[i]! > beginS[i - 1]!;
+  if (sorted) {
+    const [moments, numbers] = [beginS.subarray(0, count), values.subarray(0, count)];
+    return { beginS: moments, values: numbers, rowNumber, duplicates: 0, conflicts: 0, conflictRow: 0 };
   }
   // points of one moment stay in the order of the file
-  if (!sorted) order.sort((a, b) => beginS[a]! - beginS[b]! || a - b);
+  const order = new Int32Array(count);
+  for (let i = 0; i < count; i++) order[i] = i;
+  order.sort((a, b) => beginS[a]! - beginS[b]! || a - b);
+  const rows = new Int32Array(count);
   const points: ChannelPoints = {
     beginS: new Float64Array(count),
     values: new Float64Array(count),
-    rowNumber: new Int32Array(count),
+    rowNumber: rows,
     duplicates: 0,
     conflicts: 0,
     conflictRow: 0,
@@ -42,18 +45,17 @@ export function orderedPoints(channel: MeterChannel, keep: Keep): ChannelPoints 
   let kept = 0;
   for (const index of order) {
     if (kept > 0 && points.beginS[kept - 1] === beginS[index]) {
-      if (!settleRepeat(points, kept - 1, { value: values[index]!, row: rowNumber[index]! })) continue;
+      if (!settleRepeat(points, kept - 1, { value: values[index]!, row: rowNumber.at(index)! })) continue;
       if (keep === 'first') continue;
       kept--;
     }
     points.beginS[kept] = beginS[index]!;
     points.values[kept] = values[index]!;
-    points.rowNumber[kept] = rowNumber[index]!;
+    rows[kept] = rowNumber.at(index)!;
     kept++;
   }
   points.beginS = points.beginS.subarray(0, kept);
   points.values = points.values.subarray(0, kept);
-  points.rowNumber = points.rowNumber.subarray(0, kept);
   return points;
 }
 
@@ -98,7 +100,8 @@ export function registerSteps(points: ChannelPoints, intervalS: number): Registe
     values[i] = step < 0 || spans ? Number.NaN : Math.round(step * scale) / scale;
   }
   const beginS = points.beginS.subarray(0, n);
-  return { points: { ...points, beginS, values, rowNumber: points.rowNumber.subarray(1) }, falls, gaps };
+  const rowNumber = Int32Array.from({ length: n }, (_, i) => points.rowNumber.at(i + 1)!);
+  return { points: { ...points, beginS, values, rowNumber }, falls, gaps };
 }
 
 const MOST_DECIMALS = 9;

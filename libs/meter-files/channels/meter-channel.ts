@@ -1,4 +1,5 @@
 import { MAX_INTERVALS } from '../meter-format.js';
+import type { RunColumn } from '../reading-type/run-column.js';
 import type { Quantity } from '../record/build-columns.js';
 import { refuseTooLong } from '../time/stamped-rows.js';
 
@@ -18,16 +19,20 @@ export interface ChannelKind {
   over: number;
 }
 
+/** Rows of a file by index, as a list or packed. */
+export type RowNumbers = Int32Array | RunColumn;
+
 /** Values of one quantity over time, as formats give it that keep every quantity apart. */
 export class MeterChannel {
   readonly kind: ChannelKind;
   count = 0;
   /** beginning of each interval, or the moment of each register reading, UTC [s]; in any order */
-  beginS = new Float64Array(FIRST_POINTS);
+  beginS: Float64Array = new Float64Array(FIRST_POINTS);
   /** NaN where the file says that it has none */
-  values = new Float64Array(FIRST_POINTS);
+  values: Float64Array = new Float64Array(FIRST_POINTS);
+  #rows = new Int32Array(FIRST_POINTS);
   /** row of the file, or whatever the format counts in place of rows, from 1 */
-  rowNumber = new Int32Array(FIRST_POINTS);
+  rowNumber: RowNumbers = this.#rows;
   /** length of the intervals where the file states it [s]; NaN where it does not */
   intervalS = Number.NaN;
 
@@ -48,18 +53,28 @@ export class MeterChannel {
     if (index === this.beginS.length) this.#grow();
     this.beginS[index] = beginS;
     this.values[index] = value;
-    this.rowNumber[index] = rowNumber;
+    this.#rows[index] = rowNumber;
     this.count++;
+  }
+
+  /** Takes the values of the whole channel at once, in place of adding them. */
+  take({ beginS, values, rowNumber }: Pick<MeterChannel, 'beginS' | 'values' | 'rowNumber'>): void {
+    this.count = beginS.length;
+    this.beginS = beginS;
+    this.values = values;
+    this.rowNumber = rowNumber;
   }
 
   #grow(): void {
     const room = Math.min(2 * this.beginS.length, MAX_INTERVALS);
-    const { beginS, values, rowNumber } = this;
+    const { beginS, values } = this;
+    const rows = this.#rows;
     this.beginS = new Float64Array(room);
     this.values = new Float64Array(room);
-    this.rowNumber = new Int32Array(room);
+    this.#rows = new Int32Array(room);
+    this.rowNumber = this.#rows;
     this.beginS.set(beginS);
     this.values.set(values);
-    this.rowNumber.set(rowNumber);
+    this.#rows.set(rows);
   }
 }

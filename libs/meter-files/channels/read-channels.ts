@@ -10,7 +10,7 @@ import { gridRows } from '../record/interval-grid.js';
 import { mixedIntervals } from '../record/mixed-intervals.js';
 import { shownReading } from '../record/reading-shown.js';
 import { type ChannelPoints, type Keep, orderedPoints, registerSteps } from './channel-points.js';
-import type { MeterChannel } from './meter-channel.js';
+import type { MeterChannel, RowNumbers } from './meter-channel.js';
 
 const DAY_S = 86_400;
 
@@ -104,7 +104,7 @@ function oneInterval(ordered: readonly Series[]): number {
     const stated = channel.intervalS;
     const intervalS = Number.isNaN(stated) ? shownStepS(points, channel.kind.name) : stated;
     if (Number.isNaN(first)) first = intervalS;
-    if (intervalS !== first) throw new InputProblem([mixedIntervals(points.rowNumber[0]!, first, intervalS)]);
+    if (intervalS !== first) throw new InputProblem([mixedIntervals(points.rowNumber.at(0)!, first, intervalS)]);
   }
   return first;
 }
@@ -113,7 +113,7 @@ function shownStepS({ beginS, rowNumber }: ChannelPoints, name: string): number 
   const stepS = commonestStepS(beginS);
   if (!Number.isNaN(stepS)) return stepS;
   const expected = `at least two intervals of ${name}, so that their length shows`;
-  throw new InputProblem([{ code: 'wrong-length', row: rowNumber[0] ?? 1, expected, found: `${beginS.length}` }]);
+  throw new InputProblem([{ code: 'wrong-length', row: rowNumber.at(0) ?? 1, expected, found: `${beginS.length}` }]);
 }
 
 function asIntervals(ordered: readonly Series[], intervalS: number) {
@@ -138,9 +138,17 @@ interface Moments {
 function allMoments(series: readonly Series[]): Moments {
   const [first] = series;
   if (first === undefined) return { utcS: new Float64Array(0), rowNumber: new Int32Array(0) };
-  let moments: Moments = { utcS: first.points.beginS, rowNumber: first.points.rowNumber };
+  const { beginS: utcS, rowNumber } = first.points;
+  const rows = rowNumber instanceof Int32Array ? rowNumber : listed(rowNumber);
+  let moments: Moments = { utcS, rowNumber: rows.subarray(0, utcS.length) };
   for (const { points } of series.slice(1)) moments = union(moments, points);
   return moments;
+}
+
+function listed(rowNumber: Exclude<RowNumbers, Int32Array>): Int32Array {
+  const rows = new Int32Array(rowNumber.count);
+  for (let i = 0; i < rows.length; i++) rows[i] = rowNumber.at(i)!;
+  return rows;
 }
 
 function union(a: Moments, { beginS, rowNumber }: ChannelPoints): Moments {
@@ -154,7 +162,7 @@ function union(a: Moments, { beginS, rowNumber }: ChannelPoints): Moments {
     const left = i < a.utcS.length ? a.utcS[i]! : Number.POSITIVE_INFINITY;
     const right = j < beginS.length ? beginS[j]! : Number.POSITIVE_INFINITY;
     utcS[count] = Math.min(left, right);
-    rows[count++] = left <= right ? a.rowNumber[i]! : rowNumber[j]!;
+    rows[count++] = left <= right ? a.rowNumber[i]! : rowNumber.at(j)!;
     if (left <= right) i++;
     if (right <= left) j++;
   }
@@ -173,8 +181,9 @@ function quantitySources(series: readonly Series[], { utcS }: Moments): Quantity
       values[at] = (points.values[i]! * times) / over;
     }
     const known = sources.get(quantity);
-    if (known === undefined) sources.set(quantity, { quantity, values, energy, times: 1, over: 1, column: 0 });
-    else if (known.energy !== energy) refuseMixedUnits(channel.kind.name, points.rowNumber[0]!);
+    if (known === undefined)
+      sources.set(quantity, { quantity, values, energy, times: 1, over: 1, column: 0, spare: true });
+    else if (known.energy !== energy) refuseMixedUnits(channel.kind.name, points.rowNumber.at(0)!);
     else for (let i = 0; i < values.length; i++) known.values[i]! += values[i]!;
   }
   return [...sources.values()];

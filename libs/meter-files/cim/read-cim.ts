@@ -5,6 +5,7 @@ import type { MeterReading, ReadOptions } from '../meter-format.js';
 import { note } from '../note.js';
 import { readSeries } from '../reading-type/read-series.js';
 import { SeriesTable } from '../reading-type/series-table.js';
+import { RunColumn } from '../reading-type/run-column.js';
 import type { TimedReadings } from '../reading-type/timed-readings.js';
 import { localToUtc } from '../time/local-times.js';
 import { walkXml } from '../xml/walk-xml.js';
@@ -51,16 +52,22 @@ class LocalStamps {
   }
 
   /** @throws InputProblem where a clock of the zone never showed a time */
-  settle({ stampS, spanS, rowNumber, count }: TimedReadings): void {
-    const ends = stampS.slice(0, count);
-    const begins = ends.map((endS, i) => (spanS[i]! > 0 ? endS - spanS[i]! : endS));
+  settle(readings: TimedReadings): void {
+    const { stampS, spanS, rowNumber } = readings;
+    const ends = stampS.toNumbers();
+    const begins = ends.map((endS, i) => (spanS.at(i) > 0 ? endS - spanS.at(i) : endS));
     const utcS = this.#toUtc(ends, rowNumber, { ends: true, counted: true });
     const beginS = this.#toUtc(begins, rowNumber, { ends: false, counted: false });
-    for (let i = 0; i < count; i++) if (spanS[i]! > 0) spanS[i] = utcS[i]! - beginS[i]!;
-    stampS.set(utcS);
+    const [stamps, spans] = [new RunColumn(), new RunColumn()];
+    for (let i = 0; i < utcS.length; i++) {
+      stamps.add(utcS[i]!);
+      spans.add(spanS.at(i) > 0 ? utcS[i]! - beginS[i]! : spanS.at(i));
+    }
+    readings.stampS = stamps;
+    readings.spanS = spans;
   }
 
-  #toUtc(clock: Float64Array, rowNumber: Int32Array, how: { ends: boolean; counted: boolean }): Float64Array {
+  #toUtc(clock: Float64Array, rowNumber: RunColumn, how: { ends: boolean; counted: boolean }): Float64Array {
     let [leastS, mostS] = [Number.POSITIVE_INFINITY, Number.NEGATIVE_INFINITY];
     for (const clockS of clock) {
       leastS = Math.min(leastS, clockS);
@@ -74,7 +81,7 @@ class LocalStamps {
     if (skipped >= 0 && how.ends) {
       const expected = `a time that the clocks of ${table.zone} showed`;
       const found = new Date(clock[skipped]! * 1000).toISOString().slice(0, 16);
-      throw new InputProblem([{ code: 'bad-time', row: rowNumber[skipped]!, expected, found }]);
+      throw new InputProblem([{ code: 'bad-time', row: rowNumber.at(skipped), expected, found }]);
     }
     if (how.counted) {
       this.#doubledRows += doubledRows;

@@ -3,7 +3,8 @@ import { InputProblem, type Problem } from '#libs/engine/index.js';
 import { type Candidates, type ColumnGroup, columnCandidates, namesOf } from './column-candidates.js';
 import { CSV_QUANTITIES, type CsvQuantity } from './csv-quantity.js';
 import type { HeaderColumn } from './header-column.js';
-import { type ReadUnit, readUnit } from './unit-text.js';
+import { areKnown, wordsOf } from './header-words.js';
+import { findUnit, type ReadUnit, readUnit } from './unit-text.js';
 
 /** A column that gives a quantity, and how its numbers become kW, kvar, kVA, V or A: value × times ÷ over. */
 export interface QuantityColumn {
@@ -70,12 +71,27 @@ function combined(candidates: Candidates): ColumnSet[] {
   const isRecorded = candidates.reactive.length + candidates.lagging.length + candidates.leading.length > 0;
   let sets = measured.length > 0 || isRecorded ? measured : workedOut(candidates);
   for (const quantity of ['exported', 'connected'] as const) sets = times(sets, quantity, candidates[quantity]);
+  sets = ofOneMeter(sets);
   // several voltages (phases) can't be told from one line-to-line voltage, and nothing depends on them
   for (const quantity of ['voltage', 'standby'] as const) {
     const [group, ...others] = candidates[quantity];
     if (group?.length === 1 && others.length === 0) sets = times(sets, quantity, [group]);
   }
   return sets;
+}
+
+/** Where names such as “Press kW, Press kvar, Oven kW, Oven kvar” tell several meters apart, only columns of one go together. */
+function ofOneMeter(sets: ColumnSet[]): ColumnSet[] {
+  const uniform = sets.filter((set) => new Set(Object.values(set).flat().map(strangeWords)).size === 1);
+  const meters = new Set(uniform.map((set) => strangeWords(set.active?.[0] ?? Object.values(set)[0]![0]!)));
+  return meters.size > 1 ? uniform : sets;
+}
+
+/** The words of a name that are none of the trade's. */
+function strangeWords({ name }: HeaderColumn): string {
+  return wordsOf(findUnit(name).rest)
+    .filter((word) => !areKnown([word]) || /\d/.test(word))
+    .join(' ');
 }
 
 /** Lagging and leading go together; a column of neither with only one of them may be its other half or the whole. */

@@ -10,6 +10,7 @@ import { headerColumns } from './header-sets.js';
 import { headerWindows } from './header-windows.js';
 import { readNumberText } from './number-cell.js';
 import { RowCells } from './row-cells.js';
+import { isTextRow } from './row-shape.js';
 import { type SideColumns, sideColumns } from './side-columns.js';
 import { chooseTimeColumns, isDated, isEpoch, isSerial, type TimeColumns } from './time-columns.js';
 import { statedRatios } from './transformer-ratio.js';
@@ -199,11 +200,11 @@ function isDatedCell(cell: string, column: HeaderColumn | undefined): boolean {
   return isDated(cell) !== null || (column?.role === 'time' && (isSerial(cell) || isEpoch(cell)));
 }
 
-/** The first rows from an index on that hold anything. */
+/** The first rows from an index on that hold more than a line of text. */
 function dataBehind(rows: Row[], from: number): Row[] {
   const data: Row[] = [];
   for (let i = from; i < rows.length && data.length < SAMPLE_ROWS; i++) {
-    if (rows[i]!.cells.some((cell) => cell !== '')) data.push(rows[i]!);
+    if (rows[i]!.cells.some((cell) => cell !== '') && !isTextRow(rows[i]!.cells)) data.push(rows[i]!);
   }
   return data;
 }

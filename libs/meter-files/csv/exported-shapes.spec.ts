@@ -184,6 +184,41 @@ describe('stamps', () => {
   });
 });
 
+describe('second 59', () => {
+  const last = (i: number) => `14.03.2024 0${Math.floor(i / 4)}:${['14', '29', '44', '59'][i % 4]}:59`;
+  const firstS = Date.UTC(2024, 2, 14) / 1000;
+
+  it('is the end of an interval that is named by its last second', async () => {
+    const { record } = await readMeterText(file('Zeit;kW;kvar', (i) => [last(i), 40 + i, 20 + i], [0, 1, 2]));
+    expect([record.firstS, record.intervalS]).toEqual([firstS, 900]);
+  });
+
+  it('ends the interval that begins beside it', async () => {
+    const { record } = await readMeterText(file('Von;Bis;kW;kvar', (i) => [at(i), last(i), 40 + i, 20 + i]));
+    expect([record.firstS, record.intervalS]).toEqual([firstS, 900]);
+  });
+});
+
+describe('several meters', () => {
+  it.each(['Site', 'Location', 'Serial number', 'Feeder'])('may be told apart by a column “%s”', async (name) => {
+    const row = (meter: string, i: number, kw: number) => `${meter};${at(i)};${kw};${kw / 2}`;
+    const rows = ROWS.flatMap((i) => [row('A-1', i, 40 + i), row('B-2', i, 90 + i)]);
+    const { questions } = await questionOf(lines(`${name};Zeit;kW;kvar`, ...rows));
+    expect(questions.map(({ id, readings }) => [id, readings.map(({ map }) => map.meter)])).toEqual([
+      ['meter', ['A-1', 'B-2']],
+    ]);
+  });
+
+  it('may have columns of their own: each answer takes its columns from one of them', async () => {
+    const content = file('Zeit;Press kW;Press kvar;Oven kW;Oven kvar', (i) => [at(i), 40 + i, 20, 90 + i, 30]);
+    const { questions } = await questionOf(content);
+    expect(questions[0]!.readings.map(({ map }) => map.columns)).toEqual([
+      { active: 2, reactive: 3 },
+      { active: 4, reactive: 5 },
+    ]);
+  });
+});
+
 describe('rows that hold no interval', () => {
   const data = (...tail: string[]) => file('Zeit;kW;kvar', (i) => [at(i), 40 + i, 20 + i]) + lines(...tail);
 

@@ -173,6 +173,8 @@ function apparentRole(words: string[]): MeterColumn | null {
 
 function isMeterName(words: string[]): boolean {
   if (says(words, 'meterName')) return true;
+  const isPlace = says(words, 'place') && words.every((word) => says([word], 'place') || says([word], 'identity'));
+  if (isPlace) return true;
   return says(words, 'meter') && (says(words, 'identity') || words.length === 1);
 }
 

@@ -48,6 +48,10 @@ export const WORDS = {
   meter: 'meter meters zahler compteur contador contatore licznik device messstelle',
   meterName:
     'mpan mprn nmi pod prm ean cups meterid meterno meternumber zahlpunkt* zahlernummer zahlernr messlokation* messpunkt*',
+  /** what a column of several meters may name instead of them */
+  place:
+    'site location building feeder serial account customer station substation standort gebaude kunde lieu batiment client ' +
+    'ubicacion edificio cliente locatie gebouw',
   identity: 'id no nr number nummer numero serial name code identifier kennung bezeichnung point',
   time:
     'date datum fecha data dato tarih time zeit* uhrzeit heure hora ora tijd tijdstip tid tidpunkt godzina saat clock timestamp timestamps datetime stamp horodat* interval ' +

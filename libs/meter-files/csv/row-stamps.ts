@@ -68,6 +68,7 @@ export class RowStamps {
   /** A date alone is midnight in files that drop the clock time there; beside midnights written out it is a broken stamp. */
   end(): void {
     if (this.#time.counted && this.rows.count > 0) this.#settleCounts();
+    this.#roundLastSeconds();
     if (this.#dates === 0) return;
     if (this.#dates === this.rows.count) this.#refuseSharedDates();
     const midnights = this.rows.clockS.subarray(0, this.rows.count).filter((clockS) => clockS === 0).length;
@@ -75,6 +76,14 @@ export class RowStamps {
     const expected = 'a date and a time, as in other rows of midnight';
     const place = { row: this.#firstDateRow, column: this.#time.stamp + 1 };
     this.#problems.add({ code: 'bad-time', ...place, expected, found: 'a date alone' });
+  }
+
+  /** Stamps that all stand at second 59 name the last second of an interval: its end is the minute that follows. */
+  #roundLastSeconds(): void {
+    const clockS = this.rows.clockS.subarray(0, this.rows.count);
+    if (clockS.length === 0 || !clockS.every((second) => second % 60 === 59)) return;
+    for (let i = 0; i < clockS.length; i++) clockS[i]!++;
+    this.rows.lastSeconds = true;
   }
 
   #settleCounts(): void {
@@ -157,12 +166,19 @@ export class RowStamps {
     rows.offsetS[index] = offsetS;
   }
 
+  /** The stamp or clock time of the interval's end; at second 59 it is the last second of the interval. */
+  #endOf({ clockS }: Stamp, cells: RowCells): Stamp | null {
+    const { end } = this.#time;
+    if (end < 0) return null;
+    const read = this.#stampOf(cells.text(end)) ?? this.#clockOf(cells.text(end));
+    if (read === null || read.clockS === null) return read;
+    return read.clockS % 60 === 59 && (clockS ?? 0) % 60 === 0 ? { ...read, clockS: read.clockS + 1 } : read;
+  }
+
   /** From begin to end as far as the row states both [s]. */
   #spanOf(stamp: Stamp, cells: RowCells): number | null {
     if (stamp.untilS !== null) return modulo(stamp.untilS - (stamp.clockS ?? 0), DAY_S) || DAY_S;
-    const { end } = this.#time;
-    if (end < 0) return null;
-    const until = this.#stampOf(cells.text(end)) ?? this.#clockOf(cells.text(end));
+    const until = this.#endOf(stamp, cells);
     if (until === null || (until.clockS === null && until.dateKey === null)) return null;
     const clockS = (until.clockS ?? 0) - (stamp.clockS ?? 0) - ((until.offsetS ?? 0) - (stamp.offsetS ?? 0));
     if (until.dateKey !== null && until.dateForm === 'yearFirst' && stamp.dateForm === 'yearFirst') {

@@ -1,4 +1,5 @@
 import { InputProblem } from '#libs/engine/index.js';
+import { RunColumn } from '../reading-type/run-column.js';
 import { TimedReadings } from '../reading-type/timed-readings.js';
 import { mixedIntervals } from '../record/mixed-intervals.js';
 import type { RowProblems } from '../row-problems.js';
@@ -40,28 +41,48 @@ export class EspiBlocks {
 
   /** Gives readings without a time of their own that of their place in their block. */
   settleTimes(lengthS: number): void {
+    if (this.untimed.length === 0) return;
+    const { stampS, spanS, count } = this.readings;
+    const [stamps, spans] = [new RunColumn(), new RunColumn()];
+    const keepTo = (to: number) => {
+      for (let i = stamps.count; i < to; i++) {
+        stamps.add(stampS.at(i));
+        spans.add(spanS.at(i));
+      }
+    };
     for (const block of this.untimed) {
-      const { from, to, startS, durationS, row } = block;
-      const count = to - from;
-      const stepS = Number.isNaN(lengthS) ? durationS / count : lengthS;
-      if (!(stepS > 0) || Number.isNaN(startS)) {
-        const expected = 'a time for each reading, or the beginning of its block and the length of an interval';
-        throw new InputProblem([{ code: 'bad-time', row, expected, found: 'neither' }]);
+      const stepS = stepOf(block, lengthS);
+      keepTo(block.from);
+      for (let i = 0; i < block.to - block.from; i++) {
+        stamps.add(block.startS + i * stepS);
+        spans.add(stepS);
       }
-      if (stepS * count !== durationS && !Number.isNaN(durationS)) {
-        const expected = `${durationS / stepS} readings of ${stepS} s in a block of ${durationS} s`;
-        throw new InputProblem([{ code: 'wrong-length', row, expected, found: `${count}` }]);
-      }
-      if (!Number.isInteger(stepS)) throw new InputProblem([mixedIntervals(row, Math.round(stepS), stepS)]);
-      for (let i = 0; i < count; i++) this.readings.stampS[from + i] = startS + i * stepS;
-      this.readings.spanS.fill(stepS, from, to);
     }
+    keepTo(count);
+    this.readings.stampS = stamps;
+    this.readings.spanS = spans;
   }
 
   /** Counts readings that state no quality by the one their type states for them. */
   settleQuality(defaultQuality: number): void {
     countQuality(this.readings, defaultQuality, this.unstated);
   }
+}
+
+/** Length of the readings of a block that have no time of their own [s]. */
+function stepOf({ from, to, startS, durationS, row }: UntimedBlock, lengthS: number): number {
+  const count = to - from;
+  const stepS = Number.isNaN(lengthS) ? durationS / count : lengthS;
+  if (!(stepS > 0) || Number.isNaN(startS)) {
+    const expected = 'a time for each reading, or the beginning of its block and the length of an interval';
+    throw new InputProblem([{ code: 'bad-time', row, expected, found: 'neither' }]);
+  }
+  if (stepS * count !== durationS && !Number.isNaN(durationS)) {
+    const expected = `${durationS / stepS} readings of ${stepS} s in a block of ${durationS} s`;
+    throw new InputProblem([{ code: 'wrong-length', row, expected, found: `${count}` }]);
+  }
+  if (!Number.isInteger(stepS)) throw new InputProblem([mixedIntervals(row, Math.round(stepS), stepS)]);
+  return stepS;
 }
 
 function countQuality({ counts }: TimedReadings, quality: number, readings: number): void {

@@ -176,7 +176,7 @@ function refuseOtherPower(all: readonly Series[], { type, readings }: Series): v
     JSON.stringify({ ...other, power: 0 }) === JSON.stringify({ ...type, power: 0 });
   const other = all.find((each) => each.type.power !== type.power && alike(each.type));
   if (other === undefined) return;
-  const expected = `${describeType(type)} with a power of ten of ${type.power}, as in row ${readings.rowNumber[0]}`;
-  const row = other.readings.rowNumber[0]!;
+  const expected = `${describeType(type)} with a power of ten of ${type.power}, as in row ${readings.rowNumber.at(0)}`;
+  const row = other.readings.rowNumber.at(0);
   throw new InputProblem([{ code: 'inconsistent', row, expected, found: `${other.type.power}` }]);
 }

@@ -1,6 +1,7 @@
 import type { MeterMap } from '#libs/contract/meter-map.js';
 import { Question } from '#libs/contract/question.js';
 import { InputProblem, type Problem, type Remark } from '#libs/engine/index.js';
+import type { MeterChannel } from '../channels/meter-channel.js';
 import { readChannels } from '../channels/read-channels.js';
 import { readMeters } from '../channels/read-meters.js';
 import type { MeterReading, ReadOptions } from '../meter-format.js';
@@ -47,7 +48,10 @@ function readMeter(file: SeriesFile, meter: SeriesMeter, options: ReadOptions): 
   const said = options.map?.stamp;
   if (said === undefined && file.marks === 'begin' && chosen.some(hasEitherEnd)) askStamp(file, meter, options);
   const multiplier = options.map?.multiplier ?? 1;
-  const channels = chosen.map((each) => channelOf(each, { marks: file.marks, said }, multiplier));
+  const channels: MeterChannel[] = [];
+  for (const each of chosen) {
+    channels.push(channelOf(each, { marks: file.marks, said }, { multiplier, known: channels[0]?.beginS }));
+  }
   const rowsRead = meter.series.reduce((sum, { readings }) => sum + readings.count, 0);
   const notes = [...file.notes, ...seriesNotes(chosen, meter.series), ...markNotes(file, chosen, said)];
   if (multiplier !== 1) notes.push(note('values-multiplied', { multiplier }));
@@ -57,7 +61,7 @@ function readMeter(file: SeriesFile, meter: SeriesMeter, options: ReadOptions): 
 
 /** Whether a register's readings come with an interval and could stand at its beginning or its end. */
 function hasEitherEnd({ form, series: { readings } }: ChosenSeries): boolean {
-  return form === 'register' && readings.spanS.subarray(0, readings.count).some((spanS) => spanS > 0);
+  return form === 'register' && readings.spanS.some((spanS) => spanS > 0);
 }
 
 function askStamp(file: SeriesFile, meter: SeriesMeter, options: ReadOptions): never {
@@ -109,8 +113,7 @@ function describeSeries({ type, intervalS }: Series): string {
 /** Stamps that are ends because the format says so, not because each interval is written out. */
 function markNotes(file: SeriesFile, chosen: readonly ChosenSeries[], said: 'begin' | 'end' | undefined): Remark[] {
   const open = chosen.some(
-    ({ form, series: { readings } }) =>
-      form !== 'register' && readings.spanS.subarray(0, readings.count).some((spanS) => !(spanS > 0)),
+    ({ form, series: { readings } }) => form !== 'register' && readings.spanS.some((spanS) => !(spanS > 0)),
   );
   if (file.marks === 'begin' || said !== undefined || !open) return [];
   return [note('interval-ends-by-format', {})];

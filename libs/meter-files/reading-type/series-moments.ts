@@ -20,18 +20,23 @@ export interface StampMarks {
  * @returns NaN where nothing tells [s]
  */
 export function intervalOf({ count, spanS, stampS }: TimedReadings, statedS: number): number {
-  for (let i = 0; i < count; i++) if (spanS[i]! > 0) return spanS[i]!;
-  return Number.isNaN(statedS) ? commonestStepS(stampS.slice(0, count).sort()) : statedS;
+  for (let i = 0; i < count; i++) if (spanS.at(i) > 0) return spanS.at(i);
+  return Number.isNaN(statedS) ? commonestStepS(stampS.toNumbers().sort()) : statedS;
 }
 
 /**
  * Turns a series into a channel.
  * @param chosen the series and what it is to the record
  * @param stamps what they mark
- * @param multiplier ratio of instrument transformers that is not in the values yet, 1 where there is none
+ * @param beside ratio of instrument transformers that is not in the values yet, 1 where there is none; and the moments of
+ * another channel
  * @throws InputProblem where intervals are of several lengths
  */
-export function channelOf(chosen: ChosenSeries, stamps: StampMarks, multiplier: number): MeterChannel {
+export function channelOf(
+  chosen: ChosenSeries,
+  stamps: StampMarks,
+  { multiplier, known }: { multiplier: number; known: Float64Array | undefined },
+): MeterChannel {
   const { series, quantity, form, negative } = chosen;
   const { readings, type, intervalS } = series;
   const kilo = type.unit === 29 ? type.power : type.power - 3;
@@ -47,13 +52,26 @@ export function channelOf(chosen: ChosenSeries, stamps: StampMarks, multiplier: 
     refuseOtherLengths(readings, intervalS);
     channel.intervalS = intervalS;
   }
-  const { count, stampS, spanS, values, rowNumber } = readings;
-  for (let i = 0; i < count; i++) {
-    const shiftS =
-      form === 'register' ? registerShiftS(spanS[i]!, stamps) : intervalShiftS(spanS[i]!, intervalS, stamps);
-    channel.add(stampS[i]! + shiftS, values[i]!, rowNumber[i]!);
-  }
+  const { count, rowNumber } = readings;
+  const beginS = momentsOf(chosen, stamps, known);
+  channel.take({ beginS, values: readings.values.subarray(0, count), rowNumber });
   return channel;
+}
+
+/** The moments of a channel: those of another one themselves where they are the same, so that they are kept once. */
+function momentsOf({ series, form }: ChosenSeries, stamps: StampMarks, known: Float64Array | undefined): Float64Array {
+  const { readings, intervalS } = series;
+  const { count, stampS, spanS } = readings;
+  const shiftS =
+    form === 'register'
+      ? (i: number) => registerShiftS(spanS.at(i), stamps)
+      : (i: number) => intervalShiftS(spanS.at(i), intervalS, stamps);
+  let same = known?.length === count;
+  for (let i = 0; i < count && same; i++) same = stampS.at(i) + shiftS(i) === known![i];
+  if (same) return known!;
+  const beginS = new Float64Array(count);
+  for (let i = 0; i < count; i++) beginS[i] = stampS.at(i) + shiftS(i);
+  return beginS;
 }
 
 /** From the stamp to the moment at which a register was read [s]. */
@@ -71,13 +89,13 @@ function intervalShiftS(spanS: number, intervalS: number, { marks, said }: Stamp
 function refuseOtherLengths({ count, spanS, stampS, rowNumber }: TimedReadings, intervalS: number): void {
   let stated = false;
   for (let i = 0; i < count; i++) {
-    if (!(spanS[i]! > 0)) continue;
+    if (!(spanS.at(i) > 0)) continue;
     stated = true;
-    if (spanS[i] !== intervalS) throw new InputProblem([mixedIntervals(rowNumber[i]!, intervalS, spanS[i]!)]);
+    if (spanS.at(i) !== intervalS) throw new InputProblem([mixedIntervals(rowNumber.at(i), intervalS, spanS.at(i))]);
   }
   // a mean over a quarter of an hour, read once an hour, is no record of the hour
-  const stepS = stated ? intervalS : commonestStepS(stampS.slice(0, count).sort());
+  const stepS = stated ? intervalS : commonestStepS(stampS.toNumbers().sort());
   if (stepS !== intervalS && !Number.isNaN(stepS)) {
-    throw new InputProblem([mixedIntervals(rowNumber[0]!, intervalS, stepS)]);
+    throw new InputProblem([mixedIntervals(rowNumber.at(0), intervalS, stepS)]);
   }
 }

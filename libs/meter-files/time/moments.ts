@@ -88,7 +88,7 @@ function zoneOver(zone: string, clock: Float64Array): ZoneTable {
 }
 
 /**
- * Whether the stamps of a whole record show that they mark ends: some say 24:00, midnights stand under the ending day, or
+ * Whether the stamps of a whole record show that they mark ends: all stand at second 59, some say 24:00, midnights stand under the ending day, or
  * the first is one interval past midnight and the last is midnight.
  * @param rows in file order
  * @param moments of the rows
@@ -101,6 +101,7 @@ export function showsEnds(
   grid: { first: number; last: number; intervalS: number },
 ): string | null {
   if (moments.notes.some(({ code }) => code === 'midnight-under-ending-day')) return 'midnight under the ending day';
+  if (rows.lastSeconds) return 'stamps at the last second of an interval';
   if (rows.clockS.subarray(0, rows.count).includes(DAY_S)) return 'a stamp of 24:00';
   const firstS = moments.clockAt(grid.first);
   const lastS = moments.clockAt(grid.last);

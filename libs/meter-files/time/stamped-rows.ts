@@ -27,6 +27,8 @@ export class StampedRows {
   likelyRows = 0;
   /** length of an interval as far as rows with a begin and an end state it [s]; NaN where none does */
   spanS = Number.NaN;
+  /** the stamps named the last second of each interval, and were rounded up to its end */
+  lastSeconds = false;
 
   constructor(columns: number) {
     this.values = Array.from({ length: columns }, () => new Float64Array(FIRST_ROWS));

@@ -106,6 +106,8 @@ export const GERMAN_DEVICE_TEXTS: Readonly<Record<string, string>> = {
   '{value} equipment fault current': '{value} Kurzschlussstrom für Betriebsmittel',
   'busbars, peak withstand': 'Sammelschienen, Stoßstromfestigkeit',
   '{value} peak fault current': '{value} Stoßkurzschlussstrom',
+  'busbars, short-time withstand for 1 s': 'Sammelschienen, Kurzzeitstromfestigkeit für 1 s',
+  '{value} thermal equivalent of the fault current': '{value} thermisch gleichwertiger Kurzschlussstrom',
   conductors: 'Leitungen',
   'earth fault': 'Erdschluss',
   'cleared[ by {least}]': 'abgeschaltet[ durch {least}]',

@@ -85,6 +85,8 @@ export const GERMAN_FIGURE_TEXTS: Readonly<Record<string, string>> = {
   'equipment fault current, not the fault level of resonance':
     'Kurzschlussstrom für Betriebsmittel, nicht die Kurzschlussleistung der Resonanz',
   'peak of the equipment fault current': 'Scheitelwert des Kurzschlussstroms für Betriebsmittel',
+  'thermal equivalent of the equipment fault current over 1 s':
+    'thermisch gleichwertiger Kurzschlussstrom für Betriebsmittel über 1 s',
   'least fault current, two phases': 'kleinster Fehlerstrom, zweipolig',
   'least instantaneous setting upstream': 'kleinste unverzögerte Einstellung vorgeordnet',
   'heat of the cabinet, at most': 'Wärme des Schranks, höchstens',

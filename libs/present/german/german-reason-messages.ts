@@ -33,7 +33,7 @@ export const GERMAN_REASON_MESSAGES: Readonly<Record<string, Translation>> = {
     '{duty}[, Gruppe {group}][, Ordnung {orderH}][, {capacitors}][, an {bus}][, bei {levelKvar} zugeschaltet][, Kurzschlussleistung {faultLevelMva}][, dämpfende Last {dampingKw}][, {standing}][, Netzkondensatoren bei {networkCapacitanceFactor} ihrer Kapazität]. Die Induktivität zwischen den Stufen ist angenommen.',
   ),
   'peak.near': said(
-    'Mit {levelKvar} zugeschaltet liegt die Parallelresonanz des Netzes bei Ordnung {peakOrderH}, innerhalb von {reachH} der vorhandenen Ordnung {presentOrderH}[, Kurzschlussleistung {faultLevelMva}][, dämpfende Last {dampingKw}].',
+    'Mit {levelKvar} zugeschaltet liegt die Parallelresonanz des Netzes bei Ordnung {peakOrderH}, innerhalb von {reachH} der vorhandenen Ordnung {presentOrderH}[, gesehen an {bus}][, Kurzschlussleistung {faultLevelMva}][, dämpfende Last {dampingKw}][, {standing}].',
     'Die Verzerrung in diesem Schaltzustand messen, bevor er lange benutzt wird, oder die Resonanz verschieben.',
   ),
   'plain.distortingShare': said(

@@ -44,6 +44,57 @@ describe('numbers and letters', () => {
   });
 });
 
+describe('what a name means beside the others', () => {
+  it.each<[string, string, Expected]>([
+    [
+      'phases-by-number',
+      'P1, P2 and P3 are thirds of the whole',
+      { ...quarters, kw: [40.5, 41.5], lagging: [20.25, 20.5], notes: ['phases-added'] },
+    ],
+    [
+      'quadrants-by-name',
+      'AE is import beside AS; R1 and R2 lag, R3 and R4 lead; a quarter’s kWh are a quarter of its kW',
+      {
+        begin: '2024-05-13T00:00',
+        intervalS: 900,
+        kw: [41, 42, -10],
+        lagging: [22, 0, 3],
+        leading: [0, 5, 2],
+        notes: ['quadrants-by-name', 'export-subtracted'],
+      },
+    ],
+    [
+      'text-among-rows',
+      'lines of words are left out, and a row without a stamp whose numbers are the sums',
+      {
+        begin: '2024-05-13T00:00',
+        intervalS: 900,
+        kw: [40, 41, 42],
+        lagging: [20, 21, 22],
+        notes: ['text-rows-left-out', 'total-rows-left-out'],
+      },
+    ],
+    [
+      'extremes-only',
+      'greatest values stand for means where nothing else does, and it is said',
+      { begin: '2024-05-13T00:00', intervalS: 900, kw: [40, 41], lagging: [20, 21], notes: ['extremes-taken'] },
+    ],
+    [
+      'hours-counted',
+      'hour 1 begins at midnight',
+      {
+        begin: '2024-05-13T00:00',
+        intervalS: 3600,
+        kw: Array.from({ length: 48 }, (_, i) => (i % 24) + 41.5),
+        lagging: Array.from({ length: 48 }, (_, i) => (i % 24) + 1.25),
+        notes: ['intervals-counted'],
+      },
+    ],
+  ])('%s: %s', async (name, _why, expected) => {
+    await expectRecord(name, {}, expected);
+  });
+});
+
 describe('stamps', () => {
   it.each<[string, string, Expected]>([
     [
