@@ -72,19 +72,19 @@ describe('the arguments of a command', () => {
     [
       'an unknown option',
       ['a', '--lod', '--json'],
-      'one of --pdf, --paper, --logo, --export, --calculation, --figures, --format, --map, --time-zone, --load, --extend, --json',
+      'one of --pdf, --paper, --logo, --language, --export, --calculation, --figures, --format, --map, --time-zone, --load, --extend, --json',
       '--lod',
     ],
     [
       'a short option',
       ['a', '-j'],
-      'one of --pdf, --paper, --logo, --export, --calculation, --figures, --format, --map, --time-zone, --load, --extend, --json',
+      'one of --pdf, --paper, --logo, --language, --export, --calculation, --figures, --format, --map, --time-zone, --load, --extend, --json',
       '-j',
     ],
     [
       'a name of the language',
       ['a', '--constructor'],
-      'one of --pdf, --paper, --logo, --export, --calculation, --figures, --format, --map, --time-zone, --load, --extend, --json',
+      'one of --pdf, --paper, --logo, --language, --export, --calculation, --figures, --format, --map, --time-zone, --load, --extend, --json',
       '--constructor',
     ],
   ])('with %s are refused, naming it', (_what, args, expected, found) => {

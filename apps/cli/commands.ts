@@ -2,7 +2,7 @@ import type { Command } from './command.js';
 
 const METER_OPTIONS = { format: 'FORMAT', map: 'FILE', 'time-zone': 'ZONE' };
 
-const SHEET_OPTIONS = { paper: 'SIZE', logo: 'FILE' };
+const SHEET_OPTIONS = { paper: 'SIZE', logo: 'FILE', language: 'LANGUAGE' };
 
 const METER_LISTS = { extend: 'METER-FILE' };
 
@@ -19,6 +19,8 @@ const EXPORT_OPTIONS = { export: 'OUT', calculation: 'OUT', figures: 'FOLDER' };
 const PLAN_DETAILS = `  --load METER-FILE  the meter's record; without it the site's estimate (bills, equipment list)
   --pdf OUT          write the proposal there
   --paper SIZE       sheet of the proposal: A4 (where not given) or Letter
+  --language LANGUAGE
+                     language of the proposal: en (where not given) or de
   --logo FILE        the site's logo for the proposal, PNG or JPEG, at most 262144 bytes and 2000000 pixels
   --export OUT       write the plan with all its parts; OUT ends in .json, .csv (path, kind, value) or .xlsx
   --calculation OUT  write the calculation sheet alone: .json, .csv or .xlsx

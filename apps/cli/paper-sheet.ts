@@ -1,29 +1,37 @@
 import { InputProblem } from '#libs/engine/index.js';
+import { LANGUAGES, type Language } from '#libs/present/languages.js';
 import type { CommandLine } from './command.js';
 import { usage } from './command-line.js';
 import { readSmall } from './input-file.js';
 
-/** Sheet and logo of a proposal. */
+/** Sheet, logo and language of a proposal. */
 export interface PaperSheet {
   paper: 'A4' | 'Letter';
   logo: Uint8Array | null;
+  language: Language;
 }
 
 /**
  * Reads what was typed of the proposal's sheet, before anything is computed.
- * @param line with --paper and --logo
- * @returns the sheet, A4 without a logo where nothing was typed
- * @throws InputProblem where the size is unknown, the logo is refused, or neither has a proposal to stand on
+ * @param line with --paper, --logo and --language
+ * @returns the sheet; where nothing was typed A4, without a logo, in English
+ * @throws InputProblem where size or language is unknown, the logo is refused, or none of them has a proposal to stand on
  */
 export async function paperSheet({ values }: CommandLine): Promise<PaperSheet> {
-  const [size, logo] = [values.get('paper'), values.get('logo')];
-  if ((size !== undefined || logo !== undefined) && !values.has('pdf')) {
-    throw new InputProblem([usage('--pdf OUT beside --paper or --logo', 'none')]);
+  const [size, logo, language = 'en'] = ['paper', 'logo', 'language'].map((name) => values.get(name));
+  if (['paper', 'logo', 'language'].some((name) => values.has(name)) && !values.has('pdf')) {
+    throw new InputProblem([usage('--pdf OUT beside --paper, --logo or --language', 'none')]);
   }
   const paper = size ?? 'A4';
   if (paper !== 'A4' && paper !== 'Letter')
     throw new InputProblem([usage('--paper A4 or Letter', JSON.stringify(paper))]);
-  return { paper, logo: logo === undefined ? null : await readChecked(logo) };
+  if (!isLanguage(language))
+    throw new InputProblem([usage(`--language ${LANGUAGES.join(' or ')}`, JSON.stringify(language))]);
+  return { paper, language, logo: logo === undefined ? null : await readChecked(logo) };
+}
+
+function isLanguage(text: string): text is Language {
+  return LANGUAGES.some((language) => language === text);
 }
 
 /** What can read a logo is loaded only where there is one. */

@@ -87,8 +87,8 @@ describe('an estimate in a site file', () => {
     expect(site.estimate?.bills?.[0]?.laggingKvarh).toBeCloseTo(750, 9);
     expect(site.estimate?.bills?.[0]).not.toHaveProperty('powerFactor');
     expect(site.understood).toEqual([
-      { path: 'estimate.equipment[0].ratedKw', given: '100 hp', value: expect.closeTo(74.57, 2), unit: 'kW' },
       { path: 'estimate.bills[0].powerFactor', given: '0.8', value: expect.closeTo(750, 9), unit: 'kvarh' },
+      { path: 'estimate.equipment[0].ratedKw', given: '100 hp', value: expect.closeTo(74.57, 2), unit: 'kW' },
     ]);
   });
 

@@ -7,6 +7,7 @@ const AT_A_BUS: [list: PropertyKey[], optional: boolean][] = [
   [['network', 'motors'], false],
   [['network', 'resistive'], false],
   [['network', 'capacitors'], false],
+  [['network', 'banks'], false],
   [['loads', 'distorting'], true],
 ];
 

@@ -30,6 +30,7 @@ const generator = z.strictObject({
   ratedKva: quantity('ratedKva', POSITIVE),
   subtransientPct: quantity('subtransientPct', { above: 0, min: 0.1, max: 200 }),
   rOverX: plain({ min: 0, max: 100 }).optional(),
+  xOverR: plain({ min: 0.01, max: 1e6 }).optional(),
   state: z.enum(['off', 'running', 'either']),
 });
 
@@ -47,6 +48,11 @@ export const networkSchema = z.strictObject({
     stageGroupSchema.extend({ name: label().optional(), bus: label(), switched: z.boolean().optional() }),
     0,
     40,
+  ).optional(),
+  banks: listOf(
+    z.strictObject({ name: label().optional(), bus: label(), stages: listOf(stageGroupSchema, 1, 24) }),
+    0,
+    10,
   ).optional(),
   bankBus: label().optional(),
   couplingPoint: label().optional(),

@@ -11,6 +11,7 @@ export const planRequestSchema = z
       .describe('shared papers for this plan in place of the site’s own: the same year under next year’s tariff'),
     author: label(200).optional().describe('printed as "prepared by"'),
     paper: z.enum(['A4', 'Letter']).optional().describe('sheet of the proposal, A4 where nothing is said'),
+    language: z.enum(['en', 'de']).optional().describe('language of the proposal, English where nothing is said'),
     logo: z
       .base64()
       .max(350_000)

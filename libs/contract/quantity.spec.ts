@@ -145,7 +145,7 @@ describe('the last word of a name', () => {
     ['atKv', 'kV'],
     ['lengthM', 'm'],
     ['resistanceOhmPerKm', 'ohm/km'],
-    ['crossSectionMm2', 'mm2'],
+    ['crossSectionMm2', 'mm²'],
     ['ambientMaxC', '\u00b0C'],
     ['allowedRiseK', 'K'],
     ['airFlowM3PerH', 'm3/h'],

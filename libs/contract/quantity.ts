@@ -33,6 +33,9 @@ const WHOLE_UNITS: Record<string, { dimension: string; factor: number }> = {
   mm2: { dimension: 'mm2', factor: 1 },
   'mm\u00b2': { dimension: 'mm2', factor: 1 },
   kcmil: { dimension: 'mm2', factor: 0.506_707_479_097_497_7 },
+  MCM: { dimension: 'mm2', factor: 0.506_707_479_097_497_7 },
+  ft: { dimension: 'm', factor: 0.3048 },
+  kft: { dimension: 'm', factor: 304.8 },
   'm3/h': { dimension: 'm3/h', factor: 1 },
   'm\u00b3/h': { dimension: 'm3/h', factor: 1 },
 };
@@ -54,7 +57,7 @@ const PREFIXES: Record<string, number> = {
 const UNITS_OF_NAMES: [suffix: string, unit: string][] = [
   ['OhmPerKm', 'ohm/km'],
   ['M3PerH', 'm3/h'],
-  ['Mm2', 'mm2'],
+  ['Mm2', 'mm\u00b2'],
   ['Kvarh', 'kvarh'],
   ['Kvah', 'kVAh'],
   ['Kwh', 'kWh'],

@@ -118,7 +118,8 @@ describe('a site file with parts of it replaced', () => {
         if (site instanceof InputProblem) expect(site.problems.length).toBeGreaterThan(0);
         else {
           accepted++;
-          expect(site).toEqual(asNumbers(json));
+          const { understood: _, ...read } = site;
+          expect(read).toEqual(asNumbers(json));
         }
       }),
       { seed: SEED, numRuns: 2000 },

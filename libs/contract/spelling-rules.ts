@@ -67,9 +67,29 @@ function formRules(
   return breaches;
 }
 
+/** A resistance has one form: a ratio to the reactance, and of a transformer its load loss. */
 function ratioRules(site: Readable): RuleBreach[] {
-  const both = ['rOverX', 'xOverR'].every((key) => partAt(site, 'supply', key) !== undefined);
-  return both ? [breach(['supply', 'xOverR'], 'one of rOverX and xOverR', 'both')] : [];
+  const transformers = ['supply', 'transformers'];
+  const generators = ['network', 'generators'];
+  const places: [path: PropertyKey[], keys: string[]][] = [
+    [['supply'], ['rOverX', 'xOverR']],
+    ...listAt(site, ...transformers).map((_, i): [PropertyKey[], string[]] => [
+      [...transformers, i],
+      ['loadLossKw', 'rOverX', 'xOverR'],
+    ]),
+    ...listAt(site, ...generators).map((_, i): [PropertyKey[], string[]] => [
+      [...generators, i],
+      ['rOverX', 'xOverR'],
+    ]),
+  ];
+  return places.flatMap(([path, keys]) => {
+    const given = keys.filter((key) => partAt(site, ...path, key) !== undefined);
+    if (given.length < 2) return [];
+    const found = given.length === keys.length && keys.length === 2 ? 'both' : given.join(' and ');
+    return [
+      breach([...path, given[given.length - 1]!], `one of ${keys.join(', ').replace(/, (\w+)$/, ' and $1')}`, found),
+    ];
+  });
 }
 
 function reactorRules(site: Readable): RuleBreach[] {
@@ -77,6 +97,7 @@ function reactorRules(site: Readable): RuleBreach[] {
     ['bank', 'stages'],
     ['recordedBank', 'bank', 'stages'],
     ['network', 'capacitors'],
+    ...listAt(site, 'network', 'banks').map((_, index) => ['network', 'banks', index, 'stages']),
   ];
   return lists.flatMap((list) =>
     listAt(site, ...list).flatMap((stage, index) => {

@@ -10,6 +10,8 @@ const transformer = z.strictObject({
   impedancePct: quantity('impedancePct', { above: 0, below: 100 }),
   impedanceTolerancePct: quantity('impedanceTolerancePct', { min: 0, max: 50 }).optional(),
   loadLossKw: quantity('loadLossKw', NOT_NEGATIVE).optional(),
+  xOverR: plain({ min: 0.01, max: 1e6 }).optional(),
+  rOverX: plain({ min: 0, max: 100 }).optional(),
   noLoadLossKw: quantity('noLoadLossKw', NOT_NEGATIVE).optional(),
   noLoadCurrentPct: quantity('noLoadCurrentPct', PERCENT).optional(),
 });

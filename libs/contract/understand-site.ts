@@ -7,6 +7,7 @@ import {
   type EstimateInput,
   faultLevelOfKa,
   faultLevelOfOhm,
+  type GeneratorInput,
   type MonthlyBill,
   type NetworkInput,
   type RecordedBank,
@@ -14,15 +15,18 @@ import {
   type Site,
   type StageGroupInput,
   type SupplyInput,
+  type Transformer,
   tanFromPowerFactor,
   type Understood,
 } from '#libs/engine/index.js';
-import { partAt } from './rule-breach.js';
+import { convertedQuantities } from './converted-quantities.js';
 import type { SiteGiven } from './site-schema.js';
 
 type GivenBank = NonNullable<SiteGiven['bank']>;
 type GivenStage = GivenBank['stages'][number];
+type GivenTransformer = NonNullable<SiteGiven['supply']['transformers']>[number];
 type GivenNetwork = NonNullable<SiteGiven['network']>;
+type GivenGenerator = NonNullable<GivenNetwork['generators']>[number];
 
 /**
  * A site with every quantity in the one form the engine computes with; what stood in another form is listed.
@@ -36,9 +40,10 @@ export function understandSite(given: SiteGiven, json: unknown): Site {
   const site: Site = { ...rest, supply: said.supply(supply) };
   if (bank !== undefined) site.bank = said.bank(bank, 'bank');
   if (recordedBank !== undefined) site.recordedBank = said.recordedBank(recordedBank);
-  if (network !== undefined) site.network = said.network(network, json);
-  if (estimate !== undefined) site.estimate = said.estimate(estimate, json);
-  if (said.list.length > 0) site.understood = said.list;
+  if (network !== undefined) site.network = said.network(network);
+  if (estimate !== undefined) site.estimate = said.estimate(estimate);
+  const understood = [...said.list, ...convertedQuantities(json, given)];
+  if (understood.length > 0) site.understood = understood;
   return site;
 }
 
@@ -56,10 +61,28 @@ class Said {
   }
 
   supply(given: SiteGiven['supply']): SupplyInput {
-    const { faultLevelMva, faultLevel, xOverR, ...rest } = given;
-    const supply = { ...rest, faultLevelMva: faultLevelMva ?? this.#faultLevel(faultLevel!) };
+    const { faultLevelMva, faultLevel, xOverR, transformers, ...rest } = given;
+    const supply: SupplyInput = {
+      ...rest,
+      ...(transformers === undefined ? {} : { transformers: transformers.map((one, i) => this.#transformer(one, i)) }),
+      faultLevelMva: faultLevelMva ?? this.#faultLevel(faultLevel!),
+    };
     if (xOverR !== undefined) supply.rOverX = this.#say('supply.xOverR', `X/R of ${xOverR}`, 1 / xOverR, '');
     return supply;
+  }
+
+  // P_k = r·S_r with r = u_k/√(1 + (X/R)²)
+  #transformer({ xOverR, rOverX, ...given }: GivenTransformer, i: number): Transformer {
+    const x = xOverR ?? (rOverX === undefined ? undefined : 1 / rOverX);
+    if (x === undefined) return given;
+    const lossKw = ((given.impedancePct / 100) * given.ratedKva) / Math.sqrt(1 + x * x);
+    const [key, said] = xOverR === undefined ? ['rOverX', `R/X of ${rOverX}`] : ['xOverR', `X/R of ${xOverR}`];
+    return { ...given, loadLossKw: this.#say(`supply.transformers[${i}].${key}`, said, lossKw, 'kW') };
+  }
+
+  #generator({ xOverR, ...given }: GivenGenerator, path: string): GeneratorInput {
+    if (xOverR === undefined) return given;
+    return { ...given, rOverX: this.#say(`${path}.xOverR`, `X/R of ${xOverR}`, 1 / xOverR, '') };
   }
 
   #faultLevel(given: NonNullable<SiteGiven['supply']['faultLevel']>): SupplyInput['faultLevelMva'] {
@@ -80,7 +103,7 @@ class Said {
     return min === undefined ? { max: max! } : { max: max!, min };
   }
 
-  bank(given: GivenBank, path: string): BankInput {
+  bank<T extends Pick<GivenBank, 'stages'>>(given: T, path: string): Omit<T, 'stages'> & Pick<BankInput, 'stages'> {
     return { ...given, stages: given.stages.map((stage, g) => this.stage(stage, `${path}.stages[${g}]`)) };
   }
 
@@ -103,10 +126,7 @@ class Said {
     return stage;
   }
 
-  estimate({ bills, equipment }: NonNullable<SiteGiven['estimate']>, json: unknown): EstimateInput {
-    for (const [i, { ratedKw }] of (equipment ?? []).entries()) {
-      this.#horsepower(json, ['estimate', 'equipment', i, 'ratedKw'], ratedKw);
-    }
+  estimate({ bills, equipment }: NonNullable<SiteGiven['estimate']>): EstimateInput {
     return {
       ...(bills === undefined ? {} : { bills: bills.map((bill, k) => this.#bill(bill, `estimate.bills[${k}]`)) }),
       ...(equipment === undefined ? {} : { equipment }),
@@ -122,24 +142,19 @@ class Said {
     return { ...bill, laggingKvarh: this.#say(`${path}.powerFactor`, `${powerFactor}`, kvarh, 'kvarh') };
   }
 
-  network(given: GivenNetwork, json: unknown): NetworkInput {
-    const { cables, capacitors, ...rest } = given;
-    for (const list of ['motors', 'resistive'] as const) {
-      for (const [i, { kw }] of (given[list] ?? []).entries()) this.#horsepower(json, ['network', list, i, 'kw'], kw);
-    }
+  network(given: GivenNetwork): NetworkInput {
+    const { cables, capacitors, banks, generators, ...rest } = given;
     return {
       ...rest,
       ...(cables === undefined ? {} : { cables: cables.map((cable, i) => this.#cable(cable, `network.cables[${i}]`)) }),
       ...(capacitors === undefined
         ? {}
         : { capacitors: capacitors.map((stage, i) => this.stage(stage, `network.capacitors[${i}]`)) }),
+      ...(generators === undefined
+        ? {}
+        : { generators: generators.map((one, i) => this.#generator(one, `network.generators[${i}]`)) }),
+      ...(banks === undefined ? {} : { banks: banks.map((bank, i) => this.bank(bank, `network.banks[${i}]`)) }),
     };
-  }
-
-  #horsepower(json: unknown, [part, list, index, key]: [string, string, number, string], kw: number): void {
-    const entry = partAt(json, part, list, index, key);
-    if (typeof entry === 'string' && /hp\s*$/.test(entry))
-      this.#say(`${part}.${list}[${index}].${key}`, entry.trim(), kw, 'kW');
   }
 
   #cable(given: NonNullable<GivenNetwork['cables']>[number], path: string): CableInput {
@@ -159,7 +174,7 @@ class Said {
   ): number {
     const { crossSectionMm2, sizeAwg, metal } = given;
     const areaMm2 = crossSectionMm2 ?? awgAreaMm2(sizeAwg!);
-    const size = crossSectionMm2 === undefined ? `${sizeAwg} AWG` : `${crossSectionMm2} mm²`;
+    const size = crossSectionMm2 === undefined ? `${sizeAwg} AWG` : `${Number(crossSectionMm2.toPrecision(6))} mm²`;
     const key = crossSectionMm2 === undefined ? 'sizeAwg' : 'crossSectionMm2';
     return this.#say(`${path}.${key}`, `${size} ${metal} at 20 °C`, conductorOhmPerKm(areaMm2, metal), 'Ω/km');
   }

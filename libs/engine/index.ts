@@ -20,6 +20,7 @@ export * from './duty/limits-point.js';
 export * from './duty/loop-impedance.js';
 export * from './duty/margin-map.js';
 export * from './duty/measured-check.js';
+export * from './duty/network-capacitor-duties.js';
 export * from './duty/network-duties.js';
 export * from './duty/network-loop.js';
 export * from './duty/quick-judge.js';

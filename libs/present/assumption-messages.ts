@@ -68,6 +68,10 @@ export const ASSUMPTION_MESSAGES: Messages = {
     'Nothing was read at the orders {orders}: their currents are as stated.',
     'Read them too, or compare with the data sheets of the loads.',
   ),
+  'network.besideNotSimulated': assumed(
+    '{name} at {bus} is judged at every number of its stages that may be in. How it is switched is not simulated: what it gave while the record was taken stays in the record.',
+    'Judge it as the site’s bank too, with this one among the banks of its network.',
+  ),
   'network.cables.steady': assumed(
     'Cables keep the resistance they have at the fundamental at every order: their skin effect is small, and damping less is the severe end.',
     'Nothing to settle; the resistance of a warm cable is higher still.',

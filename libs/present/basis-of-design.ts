@@ -42,7 +42,11 @@ export function basisOfDesign(outcome: BankOutcome): Basis[] {
   }
   const rows = [...bySource].map(([source, names]) => {
     const [rule, edition] = splitEdition(source);
-    return { rule, edition, usedFor: [...[...names].map(engineName), ...(ALSO[source] ?? [])].join(', ') };
+    return {
+      rule: engineName(rule),
+      edition: engineName(edition),
+      usedFor: [...[...names].map(engineName), ...(ALSO[source] ?? [])].join(', '),
+    };
   });
   return [...rows, ...ALWAYS[outcome.site.rules]];
 }

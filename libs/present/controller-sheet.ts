@@ -1,4 +1,5 @@
 import { type BankOutcome, type ControllerSetting, controllerSettings, type SettingName } from '#libs/engine/index.js';
+import { engineName } from './engine-name.js';
 import { formatNumber, formatQuantity, GAP } from './format-number.js';
 import { groupName } from './group-name.js';
 import { words } from './language.js';
@@ -90,5 +91,5 @@ function enteredOf({ setting, value, unit }: ControllerSetting): string {
 function derivedOf({ setting, from, source }: ControllerSetting): string {
   const { derived } = WORDS[setting];
   const words = from === 'open' || from === 'site' ? ORIGINS[from] : (derived ?? ORIGINS[from]);
-  return source === '' ? words : `${words} (${source})`;
+  return source === '' ? words : `${words} (${engineName(source)})`;
 }

@@ -1,4 +1,5 @@
 import type { DeviceName, DeviceRow, DeviceState } from '#libs/engine/index.js';
+import { engineName } from './engine-name.js';
 import { formatNumber, formatQuantity } from './format-number.js';
 import { say, words } from './language.js';
 
@@ -189,7 +190,7 @@ function deviceWords(row: DeviceRow, severalGroups: boolean): DeviceWords {
     need: filled(need, row),
     fitted: row.fitted === null ? (row.state === 'noted' ? '–' : say`not entered`) : shown(row.fitted, row.unit),
     state: DEVICE_STATE_WORDS[row.state],
-    basis: row.source === 'practice' ? say`common practice` : row.source,
+    basis: row.source === 'practice' ? say`common practice` : engineName(row.source),
   };
 }
 

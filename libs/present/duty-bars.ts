@@ -64,7 +64,7 @@ export function dutyBars(duties: readonly Duty[]): BarFigure {
 /** The share from which a duty of this name is near its limit; a discharge resistor is within it or not. */
 function nearRatio(name: string): number {
   if (name === 'discharge') return 1;
-  return name.startsWith('capacitor voltage') ? NEAR_RATIO.voltage : NEAR_RATIO.other;
+  return name.includes('capacitor voltage') ? NEAR_RATIO.voltage : NEAR_RATIO.other;
 }
 
 function shareWords(duty: Duty): string {

@@ -1,4 +1,4 @@
-import { words } from './language.js';
+import { say, words } from './language.js';
 
 /** What the engine and the readers call by a name of their own: duties, quantities, sources, and values of a remark. */
 const NAMES: Readonly<Record<string, string>> = words({
@@ -15,6 +15,14 @@ const NAMES: Readonly<Record<string, string>> = words({
   'harmonic voltage at the primary': 'harmonic voltage at the primary',
   'current distortion': 'current distortion',
   'harmonic current': 'harmonic current',
+  'network capacitor voltage': 'network capacitor voltage',
+  'network capacitor voltage, crest': 'network capacitor voltage, crest',
+  'network capacitor current': 'network capacitor current',
+  'network capacitor reactive power': 'network capacitor reactive power',
+  'reactor current': 'reactor current',
+  'voltage distortion at the primary': 'voltage distortion at the primary',
+  'common practice': 'common practice',
+  'Grady and Gilleskie 1993': 'Grady and Gilleskie 1993',
   'fault level': 'fault level',
   load: 'load',
   background: 'background',
@@ -40,6 +48,49 @@ const NAMES: Readonly<Record<string, string>> = words({
   'bills and equipment': 'bills and equipment',
   derived: 'derived',
   site: 'site',
+  active: 'active',
+  reactive: 'reactive',
+  exported: 'exported',
+  lagging: 'lagging',
+  leading: 'leading',
+  positive: 'positive',
+  negative: 'negative',
+  'kW and kvar': 'kW and kvar',
+  hold: 'hold',
+  interpolate: 'interpolate',
+  'typical day': 'typical day',
+  'nearest level': 'nearest level',
+  'one by one': 'one by one',
+  even: 'even',
+  'in order': 'in order',
+  'six pulse ideal': 'six pulse ideal',
+  'six pulse': 'six pulse',
+  'six pulse no choke': 'six pulse no choke',
+  'six pulse choke': 'six pulse choke',
+  'drive benchmark': 'drive benchmark',
+  'twelve pulse': 'twelve pulse',
+  'active front end': 'active front end',
+  'single phase electronic': 'single phase electronic',
+  'negative leads': 'negative leads',
+  'negative lags': 'negative lags',
+  'negative exports': 'negative exports',
+  'lagging positive': 'lagging positive',
+  'leading positive': 'leading positive',
+  'midnight under the ending day': 'midnight under the ending day',
+  'a stamp of 24:00': 'a stamp of 24:00',
+  'the first stamp one interval past midnight and the last at midnight':
+    'the first stamp one interval past midnight and the last at midnight',
+  capacitors: 'capacitors',
+  reactors: 'reactors',
+  switches: 'switches',
+  cabinets: 'cabinets',
+  installation: 'installation',
+  'controller and engineering': 'controller and engineering',
+  contingency: 'contingency',
+  energy: 'energy',
+  years: 'years',
+  months: 'months',
+  power: 'power',
   'annuity tables': 'annuity tables',
   'method, bank': 'method, bank',
   'method, controller': 'method, controller',
@@ -63,5 +114,10 @@ const NAMES: Readonly<Record<string, string>> = words({
  * @returns the name itself where it is a standard’s, a user’s or none of the table
  */
 export function engineName(name: string): string {
-  return NAMES[name] ?? name;
+  const known = NAMES[name];
+  if (known !== undefined) return known;
+  const [, row, group] = /^(.+), group (\d+)$/.exec(name) ?? [];
+  if (row !== undefined) return say`${engineName(row)}, group ${group!}`;
+  const [, edition, emcClass] = /^(.+) class ([123])$/.exec(name) ?? [];
+  return edition === undefined ? name : say`${edition} class ${emcClass!}`;
 }

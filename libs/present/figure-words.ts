@@ -2,6 +2,7 @@ import type { Duty, Figure } from '#libs/engine/index.js';
 import { engineName } from './engine-name.js';
 import { formatNumber, GAP, inPoints, MINUS } from './format-number.js';
 import { say, words } from './language.js';
+import { plainName } from './plain-name.js';
 
 /** What a figure is called; `[*]` stands for a group's number. */
 const LABELS: Readonly<Record<string, string>> = words({
@@ -98,14 +99,16 @@ function placeWord(id: string): string {
 }
 
 /**
- * A duty's name with its group and order where it has them.
+ * A duty's name with its group, order and place where it has them.
  * @param duty a row of the result
- * @returns "capacitor current, group 1", "harmonic voltage, order 19"
+ * @returns "capacitor current, group 1", "harmonic voltage, order 19", "harmonic voltage, order 5, at MCC 2"
  */
 export function dutyName(duty: Duty): string {
   const group = duty.group === null ? '' : say`, group\u00a0${duty.group + 1}`;
   const order = duty.orderH === null ? '' : say`, order\u00a0${formatNumber(duty.orderH, 'given')}`;
-  return `${engineName(duty.name)}${group}${order}`;
+  const capacitors = duty.capacitors === undefined ? '' : `, ${plainName(duty.capacitors)}`;
+  const bus = duty.bus === undefined || duty.bus === 'primary' ? '' : say`, at ${plainName(duty.bus)}`;
+  return `${engineName(duty.name)}${group}${order}${capacitors}${bus}`;
 }
 
 /**

@@ -1,6 +1,6 @@
 import { dayNumber, localTime, type ZoneTable } from '#libs/engine/index.js';
 import { GAP } from './format-number.js';
-import { words } from './language.js';
+import { say, words } from './language.js';
 
 const MONTHS = words(['Jan', 'Feb', 'Mar', 'Apr', 'May', 'Jun', 'Jul', 'Aug', 'Sep', 'Oct', 'Nov', 'Dec']);
 const WEEKDAYS = words(['Monday', 'Tuesday', 'Wednesday', 'Thursday', 'Friday', 'Saturday', 'Sunday']);
@@ -23,7 +23,11 @@ export function formatMoment(zone: ZoneTable, epochS: number): string {
  */
 export function formatDay(zone: ZoneTable, epochS: number): string {
   const { year, month, day } = localTime(zone, epochS);
-  return `${day}${GAP}${MONTHS[month - 1]}${GAP}${year}`;
+  return dated(day, MONTHS[month - 1]!, year);
+}
+
+function dated(day: number, month: string, year: number | string): string {
+  return say`${day}\u00a0${month}\u00a0${year}`;
 }
 
 /**
@@ -55,7 +59,7 @@ export function formatClock(secondOfDay: number): string {
  */
 export function formatDate(date: string): string {
   const [year = '', month = '', day = ''] = date.split('-');
-  return `${Number(day)}${GAP}${MONTHS[Number(month) - 1] ?? month}${GAP}${year}`;
+  return dated(Number(day), MONTHS[Number(month) - 1] ?? month, year);
 }
 
 /**

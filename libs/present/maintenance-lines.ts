@@ -6,6 +6,7 @@ import {
   maintenanceChecks,
   type Outcome,
 } from '#libs/engine/index.js';
+import { engineName } from './engine-name.js';
 import { formatNumber, formatQuantity } from './format-number.js';
 import { groupName } from './group-name.js';
 import { say, words } from './language.js';
@@ -91,5 +92,5 @@ function rejectedOf({ check, least, most, unit }: MaintenanceCheck): string {
 }
 
 function basisOf({ basis, source }: MaintenanceCheck): string {
-  return basis === 'standard' || basis === 'limit' ? `${BASES[basis]}: ${source}` : BASES[basis];
+  return basis === 'standard' || basis === 'limit' ? `${BASES[basis]}: ${engineName(source)}` : BASES[basis];
 }

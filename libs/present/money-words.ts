@@ -113,7 +113,7 @@ export function financeWords({ finance }: MoneyPapers): string {
 }
 
 function named(name: string | undefined): string {
-  return name === undefined ? say`without a name` : `“${plainName(name)}”`;
+  return name === undefined ? say`without a name` : say`“${plainName(name)}”`;
 }
 
 /**
@@ -143,11 +143,12 @@ export interface NamedPick {
   reason: string;
 }
 
-const PICKS = words([
-  ['do nothing', 'Do nothing'],
-  ["keep today's bank", 'Keep today’s bank'],
-  ['new bank', 'Build the new bank'],
-] as const);
+const PICKS = ['do nothing', "keep today's bank", 'new bank'] as const;
+const PICK_NAMES: Record<(typeof PICKS)[number], string> = words({
+  'do nothing': 'Do nothing',
+  "keep today's bank": 'Keep today’s bank',
+  'new bank': 'Build the new bank',
+});
 
 /**
  * Doing nothing, keeping today's bank and the best new one, with the reasons between them.
@@ -157,9 +158,10 @@ const PICKS = words([
  */
 export function namedPicks(money: Money, papers: MoneyPapers): NamedPick[] {
   if (money.recommended === null) return [];
-  const ways = PICKS.map(([key]) => money.alternatives.find((one) => !one.sample && one.name === key) ?? null);
-  const taken = ways[PICKS.findIndex(([key]) => key === money.recommended)]!;
-  return PICKS.map(([key, name], at) => {
+  const ways = PICKS.map((key) => money.alternatives.find((one) => !one.sample && one.name === key) ?? null);
+  const taken = ways[PICKS.indexOf(money.recommended)]!;
+  return PICKS.map((key, at) => {
+    const name = PICK_NAMES[key];
     const way = ways[at]!;
     const isRecommended = key === money.recommended;
     const reason = isRecommended

@@ -16,11 +16,15 @@ export const NOTE_MESSAGES: Messages = {
   'encoding-converted': told('The file’s letters were converted from {encoding}.'),
   'rows-before-header': told('{rows:row stands|rows stand} before the header and were left out.'),
   'header-repeated': told('The header is repeated in {rows:row|rows}, which were left out.'),
+  'text-rows-left-out': told(
+    '{rows:line|lines} of text among the data {rows:was|were} left out, the first in row {first}.',
+  ),
   'total-rows-left-out': told('{rows:row of totals was|rows of totals were} left out.'),
   'decimal-mark-settled': told('The decimal mark is “{mark}”; every other reading fails.'),
   'thousands-divided': told('{numbers:number has|numbers have} a mark between thousands.'),
   'date-order-settled': told('Dates are in the order {order}; every other reading fails.'),
   'serial-dates': told('Stamps are a spreadsheet’s serial dates, counted from 1900 and rounded to the second.'),
+  'intervals-counted': told('{column} counts the intervals of a day: {perDay} from midnight to midnight.'),
   'rows-newest-first': told('The rows stand newest first; {rows:row was|rows were} turned round.'),
   'rows-put-in-order': noted(
     '{rows:row stood|rows stood} out of order and were put in place.',
@@ -112,6 +116,10 @@ export const NOTE_MESSAGES: Messages = {
   ),
   'power-factor-in-percent': told('The power factor is written in percent and was divided by 100.'),
   'power-factor-sign-taken': told('The sign of the power factor was read as: {sign}.', 'See that it is so.'),
+  'extremes-taken': noted(
+    'By its name {columns} is a greatest or least value; it was read as the mean of the interval.',
+    'See that it is one.',
+  ),
   'phases-added': told('Columns of the three phases were added: {columns}.'),
   'registers-differenced': told(
     'Columns hold the readings of registers; the energy of an interval is the difference of two: {columns}.',
@@ -125,6 +133,9 @@ export const NOTE_MESSAGES: Messages = {
   ),
   'quadrants-added': told(
     'Reactive energy of quadrants I and II was added as lagging, of III and IV as leading; exported energy was subtracted.',
+  ),
+  'quadrants-by-name': told(
+    'Reactive energy of quadrants I and II was read as lagging, of III and IV as leading: {columns}.',
   ),
   'channels-added': told('Channels {channels} were added up as {quantity}.'),
   'channels-left-out': told(

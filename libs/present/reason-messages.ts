@@ -1,7 +1,9 @@
 import type { Messages } from './message.js';
 
-const WHERE = '[, group {group}][, order {orderH}]';
-const MET = '[, met with {levelKvar} connected][, fault level {faultLevelMva}][, damping load {dampingKw}]';
+const WHERE = '[, group {group}][, order {orderH}][, {capacitors}][, at {bus}]';
+const MET =
+  '[, met with {levelKvar} connected][, fault level {faultLevelMva}][, damping load {dampingKw}][, {standing}]' +
+  '[, the network’s capacitors at {networkCapacitanceFactor} of their capacitance]';
 
 /** Why a verdict is what it is. */
 export const REASON_MESSAGES: Messages = {

@@ -291,7 +291,7 @@ function waysWords(remedies: readonly Remedy[]): string {
   const mend = remedies.filter(({ mends }) => mends).length;
   if (remedies.length === 0) return say`nothing to mend`;
   if (mend === 0) return say`no single way mends it whole`;
-  return say`${countWord(mend)} ${mend === 1 ? say`way` : say`ways`} to mend it`;
+  return mend === 1 ? say`one way to mend it` : say`${countWord(mend)} ways to mend it`;
 }
 
 function listed(parts: readonly string[]): string {

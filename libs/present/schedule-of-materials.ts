@@ -86,7 +86,9 @@ function bankLines({ bank, result }: BankOutcome): MaterialLine[] {
       ? []
       : one(
           say`controller`,
-          say`${formatNumber(ways, 'whole')}\u00a0${ways === 1 ? say`way` : say`ways`} or more, settings of section 16`,
+          ways === 1
+            ? say`1\u00a0way or more, settings of section 16`
+            : say`${formatNumber(ways, 'whole')}\u00a0ways or more, settings of section 16`,
         )),
     ...(ways === 0
       ? []

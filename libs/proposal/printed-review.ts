@@ -13,9 +13,10 @@ export interface PrintedSignature {
 /** What a review adds to the paper of its approval. */
 export interface PrintedReview {
   signatures: readonly PrintedSignature[];
-  /** decisive figures worked out by hand, each in one line */
-  handChecks: readonly string[];
-  accepted: readonly { what: string; reason: string; by: string; date: string }[];
+  /** decisive figures worked out by hand, each under its frozen label */
+  handChecks: readonly { figure: string; label: string; said: string }[];
+  /** findings in their frozen words */
+  accepted: readonly { id: string; what: string; reason: string; by: string; date: string }[];
   /** said where nobody but who prepared it has checked it */
   ownApproval: string | null;
 }

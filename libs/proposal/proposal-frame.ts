@@ -1,4 +1,5 @@
 import type { Reevaluation } from '#libs/engine/index.js';
+import type { Language } from '#libs/present/languages.js';
 import type { RevisionNumbers } from '#libs/present/revision-numbers.js';
 import type { PaperSize } from './paper.js';
 import type { PrintedReview } from './printed-review.js';
@@ -38,6 +39,8 @@ export interface ProposalFrame {
   /** signatures and acceptances of the paper of an approval */
   review?: PrintedReview;
   paper?: PaperSize;
+  /** English where nothing is said */
+  language?: Language;
   /** the site's logo, a PNG or JPEG file */
   logo?: Uint8Array | null;
   /** where an installed bank was judged again */

@@ -1,11 +1,13 @@
 import { type EstimateOutcome, isEstimate, monthSpan, type Outcome } from '#libs/engine/index.js';
-import { say } from '#libs/present/language.js';
+import { catalogueOf } from '#libs/present/catalogue-of.js';
+import { inLanguage, say, spokenCatalogue } from '#libs/present/language.js';
 import { plainName } from '#libs/present/plain-name.js';
+import { putEstimateInWords, putInWords } from '#libs/present/put-in-words.js';
 import { needIssuable } from './missing-parts.js';
 import { drawHeaders, setHeader } from './page-header.js';
 import { Paper, sheet } from './paper.js';
 import type { ProposalFrame } from './proposal-frame.js';
-import { readLogo } from './read-logo.js';
+import { type Logo, readLogo } from './read-logo.js';
 import { drawAgeing } from './section-ageing.js';
 import { drawAssumptions, drawBasis } from './section-basis.js';
 import { drawCautions } from './section-cautions.js';
@@ -47,21 +49,36 @@ export type { ProposalFrame } from './proposal-frame.js';
 export async function renderProposal(outcome: Outcome | EstimateOutcome, frame: ProposalFrame): Promise<Uint8Array> {
   needIssuable(outcome, frame);
   const logo = frame.logo == null ? null : readLogo(frame.logo);
-  const doc = await openDocument(outcome, frame);
+  const catalogue = catalogueOf(frame.language ?? 'en');
+  const info = inLanguage(catalogue, () => infoOf(outcome, frame));
+  const doc = await openDocument(info, frame);
   const chunks: Buffer[] = [];
   const finished = new Promise<void>((resolve, reject) => {
     doc.on('data', (chunk: Buffer) => chunks.push(chunk));
     doc.on('end', resolve);
     doc.on('error', reject);
   });
-  const paper = new Paper(doc);
+  inLanguage(catalogue, () => drawParts(new Paper(doc), reworded(outcome), frame, logo));
+  doc.end();
+  await finished;
+  return Buffer.concat(chunks);
+}
+
+/** An outcome comes in English words; another language finds its own by code and value. */
+function reworded(outcome: Outcome | EstimateOutcome): Outcome | EstimateOutcome {
+  if (spokenCatalogue() === null) return outcome;
+  if (isEstimate(outcome)) return { ...outcome, result: putEstimateInWords(outcome.result) };
+  return { ...outcome, result: putInWords(outcome.result) };
+}
+
+function drawParts(paper: Paper, outcome: Outcome | EstimateOutcome, frame: ProposalFrame, logo: Logo | null): void {
   const header = setHeader(paper, frame, outcome);
   paper.begin(header.contentTop);
   drawDecision(paper, outcome, logo);
   drawReevaluation(paper, outcome, frame.reevaluation);
-  drawSignatures(paper, frame);
+  drawSignatures(paper, outcome, frame);
   drawFindings(paper, outcome);
-  drawAccepted(paper, frame);
+  drawAccepted(paper, outcome, frame);
   drawBasis(paper, outcome);
   drawAssumptions(paper, outcome);
   if (isEstimate(outcome)) drawEstimate(paper, outcome);
@@ -87,34 +104,36 @@ export async function renderProposal(outcome: Outcome | EstimateOutcome, frame: 
   drawVerification(paper, outcome, frame);
   drawHeaders(paper, header);
   paper.end();
-  doc.end();
-  await finished;
-  return Buffer.concat(chunks);
 }
 
-/** pdfkit is loaded when the first paper is wanted; dates come from the content, never from a clock. */
-async function openDocument(outcome: Outcome | EstimateOutcome, frame: ProposalFrame): Promise<PDFKit.PDFDocument> {
-  const { default: PDFDocument } = await import('pdfkit');
+/** What the file says of itself; dates come from the content, never from a clock. */
+function infoOf(outcome: Outcome | EstimateOutcome, frame: ProposalFrame): PDFKit.DocumentInfo {
   const when = new Date(contentEndS(outcome) * 1000);
+  return {
+    Title: say`Power-factor correction for ${plainName(outcome.site.name)}`,
+    Subject: say`Proposal ${frame.number}, revision ${frame.revision}, ${stateWords(frame.state)}`,
+    Keywords: frame.contentHash,
+    Creator: `Varwright engine ${frame.engineVersion}`,
+    Producer: `Varwright engine ${frame.engineVersion}`,
+    CreationDate: when,
+    ModDate: when,
+  };
+}
+
+/** pdfkit is loaded when the first paper is wanted. */
+async function openDocument(info: PDFKit.DocumentInfo, frame: ProposalFrame): Promise<PDFKit.PDFDocument> {
+  const { default: PDFDocument } = await import('pdfkit');
   return new PDFDocument({
     size: sheet(frame.paper ?? 'A4'),
     margin: 0,
     pdfVersion: '1.7',
     tagged: true,
-    lang: 'en',
+    lang: frame.language ?? 'en',
     displayTitle: true,
     bufferPages: true,
     // no font until one of ours is asked for, so that none of the built-in ones gets in
     font: null as unknown as string,
-    info: {
-      Title: say`Power-factor correction for ${plainName(outcome.site.name)}`,
-      Subject: say`Proposal ${frame.number}, revision ${frame.revision}, ${stateWords(frame.state)}`,
-      Keywords: frame.contentHash,
-      Creator: `Varwright engine ${frame.engineVersion}`,
-      Producer: `Varwright engine ${frame.engineVersion}`,
-      CreationDate: when,
-      ModDate: when,
-    },
+    info,
   });
 }
 

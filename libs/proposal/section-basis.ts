@@ -2,6 +2,7 @@ import type { BankOutcome } from '#libs/engine/index.js';
 import { assumptionSource } from '#libs/present/assumption-source.js';
 import { basisOfDesign, RULE_SET_WORDS } from '#libs/present/basis-of-design.js';
 import { effectWords } from '#libs/present/effect-words.js';
+import { engineName } from '#libs/present/engine-name.js';
 import { formatNumber, formatQuantity } from '#libs/present/format-number.js';
 import { say } from '#libs/present/language.js';
 import { plainName } from '#libs/present/plain-name.js';
@@ -52,7 +53,7 @@ function drawLoads(paper: Paper, { site }: BankOutcome): void {
       String(at + 1),
       plainName(name),
       formatQuantity(fundamentalA, 'A', 'given'),
-      given ?? (spectrum ?? '').replaceAll('-', ' '),
+      given ?? engineName((spectrum ?? '').replaceAll('-', ' ')),
     ];
   });
   drawTable(paper, columns, rows);
@@ -63,7 +64,7 @@ function pointWords({ result }: BankOutcome): string {
   const { voltage, points, couplingPoint } = result.limits;
   const buses = points.filter((point) => point !== 'primary');
   const at = `${buses.length === 1 ? say`bus` : say`the buses`} ${buses.map(plainName).join(', ')}`;
-  const judged = say`${voltage} is held against the voltage at ${at}`;
+  const judged = say`${engineName(voltage)} is held against the voltage at ${at}`;
   if (couplingPoint !== 'primary') return say`${judged}; the point of coupling is ${plainName(couplingPoint)}.`;
   return say`${judged} and at the transformer’s primary, which is the point of coupling.`;
 }

@@ -1,4 +1,5 @@
 import type { BankOutcome, Figure } from '#libs/engine/index.js';
+import { engineName } from '#libs/present/engine-name.js';
 import { formatNumber, printedArithmetic } from '#libs/present/format-number.js';
 import { handChecked } from '#libs/present/hand-checked.js';
 import { say } from '#libs/present/language.js';
@@ -30,7 +31,7 @@ export function drawHandCheck(paper: Paper, outcome: BankOutcome): void {
 }
 
 function checkRow(paper: Paper, figure: Figure): Cell[] {
-  const unit = figure.unit === '' ? '' : `\u00a0${figure.unit}`;
+  const unit = figure.unit === '' ? '' : `\u00a0${engineName(figure.unit)}`;
   return [
     figure.label,
     [{ text: printedArithmetic(figure.formula), ink: SOFT }, NEW_LINE, printedArithmetic(figure.working)],

@@ -81,7 +81,9 @@ function columns(first: string): Column[] {
 
 /** "Q_N in kvar, U_N in V"; a pure number goes without saying. */
 function unitWords({ inputs }: Figure): string {
-  const named = inputs.filter(({ unit }) => unit !== '').map(({ symbol, unit }) => say`${symbol}\u00a0in\u00a0${unit}`);
+  const named = inputs
+    .filter(({ unit }) => unit !== '')
+    .map(({ symbol, unit }) => say`${symbol}\u00a0in\u00a0${engineName(unit)}`);
   return named.length === 0 ? '' : `${named.join(', ')}.`;
 }
 
@@ -92,5 +94,5 @@ function formulaCell({ formula, working }: { formula: string; working: string })
 
 function valueCell({ value, unit, formula }: { value: number; unit: string; formula: string }): Piece[] {
   const number = formula === '' ? formatNumber(value, 'working') : formatNumber(value, 'answer');
-  return [{ text: number, weight: 'semibold' }, ...(unit === '' ? [] : [`\u00a0${unit}`])];
+  return [{ text: number, weight: 'semibold' }, ...(unit === '' ? [] : [`\u00a0${engineName(unit)}`])];
 }

@@ -2,6 +2,7 @@ import type { Bill, EstimateOutcome, MoneyPapers, Outcome } from '#libs/engine/i
 import { isEstimate } from '#libs/engine/index.js';
 import { billsByMonth } from '#libs/present/bills-by-month.js';
 import { cashFlowFigure, isPriced, type PricedMoney } from '#libs/present/cash-flow-figure.js';
+import { engineName } from '#libs/present/engine-name.js';
 import { lowered } from '#libs/present/first-letter.js';
 import { formatFixed, formatNumber, formatQuantity } from '#libs/present/format-number.js';
 import { say } from '#libs/present/language.js';
@@ -174,7 +175,7 @@ function drawCosts(paper: Paper, money: PricedMoney, papers: MoneyPapers): void 
     { head: unit, share: 1.6, align: 'right' },
   ];
   const top = paper.y;
-  const items = capital.lines.map(({ item, amount }) => [item, formatFixed(amount, 0)]);
+  const items = capital.lines.map(({ item, amount }) => [engineName(item), formatFixed(amount, 0)]);
   drawTable(paper, columns(say`capital`), [...items, [say`capital, together`, formatFixed(capital.total, 0)]], {
     ...TIGHT,
     ...left,

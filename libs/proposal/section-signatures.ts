@@ -1,4 +1,7 @@
-import { say, words } from '#libs/present/language.js';
+import type { EstimateOutcome, Outcome } from '#libs/engine/index.js';
+import { labelOf } from '#libs/present/figure-words.js';
+import { findings } from '#libs/present/findings.js';
+import { say, spokenCatalogue, words } from '#libs/present/language.js';
 import { formatDate } from '#libs/present/local-stamp.js';
 import { INK, SOFT, STROKE } from './ink.js';
 import { LABEL, leading, NOTE, type Paper, rise } from './paper.js';
@@ -15,10 +18,10 @@ const NOTE_STYLE: Style = { ...LABEL, ink: SOFT };
 const HEIGHT = 62;
 
 /** Who prepared, checked and approved: places to sign on a draft; on an approved paper what each signed, and in what capacity. */
-export function drawSignatures(paper: Paper, frame: ProposalFrame): void {
+export function drawSignatures(paper: Paper, outcome: Outcome | EstimateOutcome, frame: ProposalFrame): void {
   paper.heading('1', say`Prepared, checked, approved`, { keep: HEIGHT + 4 });
   if (frame.review === undefined) drawPlaces(paper, frame);
-  else drawSigned(paper, frame.review, frame.preparedBy);
+  else drawSigned(paper, outcome, frame.review, frame.preparedBy);
 }
 
 /** Three places to sign; a name only where somebody gave one. */
@@ -48,7 +51,12 @@ function drawPlaces(paper: Paper, frame: ProposalFrame): void {
 }
 
 /** Each signature with its own statement, and what was worked out by hand. */
-function drawSigned(paper: Paper, review: PrintedReview, preparedBy: string | null): void {
+function drawSigned(
+  paper: Paper,
+  { result }: Outcome | EstimateOutcome,
+  review: PrintedReview,
+  preparedBy: string | null,
+): void {
   if (preparedBy !== null) paper.paragraph([{ text: say`Prepared by `, ink: SOFT }, preparedBy], { after: 4 });
   if (review.ownApproval !== null) {
     paper.paragraph([{ text: review.ownApproval, weight: 'semibold' }], { after: 6 });
@@ -66,16 +74,22 @@ function drawSigned(paper: Paper, review: PrintedReview, preparedBy: string | nu
     paper.paragraph([statement], { style: NOTE, after: 7 });
   }
   if (review.handChecks.length > 0) {
-    paper.paragraph([{ text: say`Checked by hand: `, ink: SOFT }, `${review.handChecks.join('; ')}.`], { after: 4 });
+    const checks = review.handChecks.map(({ figure, label, said }) => {
+      const named = spokenCatalogue() === null ? label : labelOf(figure, result.duties);
+      return `${named} ${said}`;
+    });
+    paper.paragraph([{ text: say`Checked by hand: `, ink: SOFT }, `${checks.join('; ')}.`], { after: 4 });
   }
 }
 
 /** What the reviewer took on, each finding by itself with the reason; stands behind the findings. */
-export function drawAccepted(paper: Paper, { review }: ProposalFrame): void {
-  for (const { what, reason, by, date } of review?.accepted ?? []) {
+export function drawAccepted(paper: Paper, outcome: Outcome | EstimateOutcome, { review }: ProposalFrame): void {
+  // what was accepted stands in frozen words; another language takes its own for the same finding
+  const own = spokenCatalogue() === null ? [] : findings(outcome);
+  for (const { id, what, reason, by, date } of review?.accepted ?? []) {
     const accepted: Piece[] = [
       { text: say`Accepted by ${by}, ${formatDate(date)}: `, ink: SOFT },
-      `${what} `,
+      `${own.find((finding) => finding.id === id)?.what ?? what} `,
       { text: say`Reason: `, ink: SOFT },
       reason,
     ];

@@ -5,8 +5,11 @@ import { describe, expect, it } from 'vitest';
 import {
   assessBank,
   basisOf,
+  type CornerCase,
   type Duty,
   firmVerdict,
+  NAMEPLATE,
+  type NetworkScene,
   networkScene,
   type Outcome,
   type SettledSite,
@@ -22,6 +25,7 @@ import { driftingLoad, madeRecord } from '../support/made-record.js';
 import { madeSite } from '../support/made-site.js';
 import { slowCircuit } from '../support/slow-circuit.js';
 import { type SlowRow, slowDuties } from '../support/slow-duties.js';
+import { admittanceOfStage } from '../support/slow-network.js';
 import { runs, SEED } from '../support/soak.js';
 
 const SITES = runs(500, 10_000);
@@ -177,9 +181,36 @@ function networkObjections(random: Chance): Objections {
           pct.map((ofOrder) => ofOrder[bus]!),
         ),
       ),
+      ...overloaded(scene, corners[index]!, pct),
     );
   }
   return { verdict, said };
+}
+
+// What the network's own capacitors carry at those voltages, held against their nameplates.
+function overloaded({ site, model }: NetworkScene, { corner, network }: CornerCase, pct: number[][]): string[] {
+  const { capacitanceFactor, inductanceFactor } = model.corners.networks[network]!.state!.tolerance ?? NAMEPLATE;
+  expect([corner.networkCapacitanceFactor ?? 1, corner.networkInductanceFactor ?? 1]).toEqual([
+    capacitanceFactor,
+    inductanceFactor,
+  ]);
+  return site.topology!.capacitors.flatMap(({ name, bus, group }, c) => {
+    if (model.corners.networks[network]!.state!.capacitorsIn[c] === 0) return [];
+    const slow = { exponent: site.supply.resistanceExponent, capacitanceFactor, inductanceFactor };
+    const ohm = (h: number): number => group.ratedV ** 2 / (group.ratedKvar * 1000) / capacitanceFactor / h;
+    const amperes = ORDERS_H.map(
+      (h, i) => ((pct[i]![bus]! / 100) * site.nominalV * admittanceOfStage(slow, group, h).size) / Math.sqrt(3),
+    );
+    const first = (site.highestV / Math.sqrt(3)) * admittanceOfStage({ ...slow, exponent: 0 }, group, 1).size;
+    const volts = ORDERS_H.map((h, i) => Math.sqrt(3) * amperes[i]! * ohm(h));
+    const currentLimit = site.rules === 'iec' ? 1.3 * capacitanceFactor : 1.35;
+    const found = [
+      Math.hypot(first, ...amperes) / ((currentLimit * group.ratedKvar * 1000) / (Math.sqrt(3) * group.ratedV)),
+      Math.hypot(Math.sqrt(3) * first * ohm(1), ...volts) / (1.1 * group.ratedV),
+    ];
+    // the reactor's resistance is in the second method's fundamental, a ten-thousandth of it
+    return found.some((ratio) => ratio > 1 + 1e-4) ? [`clear, yet ${name} at ${Math.max(...found)}`] : [];
+  });
 }
 
 // Limits passed by a bus's voltages, one an order.

@@ -54,6 +54,10 @@ function scaled(site: Site, k: number): Site {
       motors: network.motors!.map((m) => ({ ...m, kw: k * m.kw })),
       resistive: network.resistive!.map((r) => ({ ...r, kw: k * r.kw })),
       capacitors: network.capacitors!.map((c) => ({ ...c, ratedKvar: k * c.ratedKvar })),
+      banks: (network.banks ?? []).map((bank) => ({
+        ...bank,
+        stages: bank.stages.map((stage) => ({ ...stage, ratedKvar: k * stage.ratedKvar })),
+      })),
     },
   };
 }
@@ -174,6 +178,7 @@ function renamed(site: Site, names: ReadonlyMap<string, string>): Site {
     motors: network.motors!.map(at),
     resistive: network.resistive!.map(at),
     capacitors: network.capacitors!.map(at),
+    banks: (network.banks ?? []).map(at),
     bankBus: names.get(network.bankBus ?? network.buses[0]!.name)!,
   };
   const transformers = site.supply.transformers!.map((t) => ({ ...t, bus: names.get(t.bus!)! }));

@@ -164,13 +164,29 @@ class Writer {
         const name = set.name ?? `capacitors ${g + 1}`;
         const fewer = this.#standing.find((part) => part.endsWith(` of ${name}`));
         const count = fewer === undefined ? set.count : Number.parseInt(fewer, 10);
-        const { r, x, c } = ohm(set);
-        const { networkInductanceFactor = 1, networkCapacitanceFactor = 1 } = corner;
-        const inCorner = { r, x: x * networkInductanceFactor, c: c / networkCapacitanceFactor };
-        return Array.from({ length: count }, (_, k) =>
-          this.#series(`f${g}x${k}`, this.#node(set.bus), '0', inCorner),
-        ).flat();
+        return this.#beside(`f${g}`, this.#node(set.bus), count, ohm(set));
+      }),
+      ...(network!.banks ?? []).flatMap(({ name = '', bus, stages }, k) => {
+        const counts = this.#stagesIn(name === '' ? `bank ${k + 1}` : name, stages);
+        return stages.flatMap((stage, g) => this.#beside(`h${k}g${g}`, this.#node(bus), counts[g]!, ohm(stage)));
       }),
     ];
+  }
+
+  // "bank 1 out", "bank 1 with 2 + 0 stages in"; all in where nothing is said.
+  #stagesIn(name: string, stages: readonly { count: number }[]): number[] {
+    if (this.#standing.includes(`${name} out`)) return stages.map(() => 0);
+    const told = this.#standing.find((part) => part.startsWith(`${name} with `));
+    if (told === undefined) return stages.map(({ count }) => count);
+    return told
+      .slice(`${name} with `.length)
+      .split(' + ')
+      .map((count) => Number.parseInt(count, 10));
+  }
+
+  #beside(name: string, node: string, count: number, { r, x, c }: Required<Omit<Ohm, 'steady'>>): string[] {
+    const { networkInductanceFactor = 1, networkCapacitanceFactor = 1 } = this.#circuit.corner;
+    const inCorner = { r, x: x * networkInductanceFactor, c: c / networkCapacitanceFactor };
+    return Array.from({ length: count }, (_, k) => this.#series(`${name}x${k}`, node, '0', inCorner)).flat();
   }
 }

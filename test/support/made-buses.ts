@@ -12,7 +12,7 @@ export function madeBusNames(count: number): string[] {
 
 /**
  * A site of chance with a network of 1 to 8 buses: radial or ringed by cables, couplers open, closed or either,
- * generators, motors, resistive loads, 0 to 3 sets of capacitors besides the bank, transformers in parallel or each on
+ * generators, motors, resistive loads, 0 to 3 sets of capacitors and a further bank besides the bank, transformers in parallel or each on
  * its own bus. It always stands: every bus has a way to the supply.
  * @param random where the numbers come from
  * @returns the site, its distorting loads and background not given
@@ -99,7 +99,14 @@ function madeNetworkInput(random: Chance, { names, fed, nominalV, transformers }
     })),
     ...(random.next() < 0.6 ? { bankBus: at() } : {}),
     transformerOut: transformers > 1 && random.next() < 0.4,
+    ...(random.next() < 0.2 ? { banks: [{ bus: at(), stages: madeFurtherStages(random, nominalV) }] } : {}),
   };
+}
+
+function madeFurtherStages(random: Chance, nominalV: number): StageGroupInput[] {
+  const stages = (): StageGroupInput => ({ ...madeStages(random, nominalV), count: random.whole(1, 2) });
+  const first = stages();
+  return random.next() < 0.5 ? [first] : [first, { ...stages(), fixed: random.next() < 0.3 }];
 }
 
 // Every bus after the first hangs from an earlier one, unless it has a transformer and a coupler may stay open.

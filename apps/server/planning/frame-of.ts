@@ -25,19 +25,20 @@ export async function frameOf(store: Store, framed: Framed): Promise<ProposalFra
   };
 }
 
-/** Sheet and logo, where they were asked for. */
-export function sheetOf({ paper, logo }: Pick<FrozenPlan, 'paper' | 'logo'>): Pick<ProposalFrame, 'paper' | 'logo'> {
+/** What the paper looks like, so far as it was asked for. */
+type Sheet = Pick<ProposalFrame, 'paper' | 'language' | 'logo'>;
+
+/** Sheet, language and logo, where they were asked for. */
+export function sheetOf({ paper, language, logo }: Pick<FrozenPlan, 'paper' | 'language' | 'logo'>): Sheet {
   return {
     ...(paper === undefined ? {} : { paper }),
+    ...(language === undefined ? {} : { language }),
     ...(logo === undefined ? {} : { logo: new Uint8Array(Buffer.from(logo, 'base64')) }),
   };
 }
 
-/** Sheet and logo a stored revision was asked for with. */
-export async function sheetOfRevision(
-  store: Store,
-  { siteId, revision, contentHash }: Revision,
-): Promise<Pick<ProposalFrame, 'paper' | 'logo'>> {
+/** Sheet, language and logo a stored revision was asked for with. */
+export async function sheetOfRevision(store: Store, { siteId, revision, contentHash }: Revision): Promise<Sheet> {
   const made = { siteId, revision, inputHash: contentHash };
   const job = await store.read((manager) => manager.findOne(Job, { where: made, order: { id: 'ASC' } }));
   return job === null ? {} : sheetOf(job.request as FrozenPlan);

@@ -1,4 +1,5 @@
 import type { Site, ZoneTable } from '#libs/engine/index.js';
+import type { Language } from '#libs/present/languages.js';
 import type { Person } from '#libs/review/review-act.js';
 
 /** What a job of planning needs, frozen when it is asked for. */
@@ -14,8 +15,9 @@ export interface FrozenPlan {
   reason: string | null;
   /** who asked for it, and so cannot approve it alone; absent in jobs that were queued before anybody was named */
   preparedBy?: Person;
-  /** sheet and logo of the proposal; absent where none was asked for */
+  /** sheet, language and logo of the proposal; absent where none was asked for */
   paper?: 'A4' | 'Letter';
+  language?: Language;
   /** base64 */
   logo?: string;
 }

@@ -53,6 +53,7 @@ export class Planning {
       reason: request.reason ?? null,
       ...(by === undefined ? {} : { preparedBy: by }),
       ...(request.paper === undefined ? {} : { paper: request.paper }),
+      ...(request.language === undefined ? {} : { language: request.language }),
       ...(request.logo === undefined ? {} : { logo: request.logo }),
     };
     return this.make(stored.id, frozen);

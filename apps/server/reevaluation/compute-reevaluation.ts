@@ -13,6 +13,7 @@ import {
 import { partOfWatch } from '#libs/jobs/pool/part-of-watch.js';
 import { portWatch } from '#libs/jobs/pool/port-watch.js';
 import { packAnswer, type WorkerAnswer } from '#libs/jobs/pool/worker-answer.js';
+import type { Language } from '#libs/present/languages.js';
 import { putInWords } from '#libs/present/put-in-words.js';
 import { sinceSentences, tonightSentences } from '#libs/present/reevaluation-words.js';
 import { renderProposal } from '#libs/proposal/render-proposal.js';
@@ -56,6 +57,7 @@ export function computeReevaluation({
 /** A bank then and now, and why it is looked at, for a paper. */
 export interface ReevaluationPaperTask extends ReevaluationTask {
   reason: string;
+  language: Language;
 }
 
 /** Share of the whole at which the bank is judged; ranges are sought in the rest. */
@@ -78,7 +80,7 @@ export function computeReevaluationPaper({
 
 function paperOf(
   { reevaluation }: Reevaluated,
-  { before, after, reason }: ReevaluationPaperTask,
+  { before, after, reason, language }: ReevaluationPaperTask,
   firm: Reevaluated['after'],
 ): Promise<Uint8Array> {
   const contentHash = hashOf([after, before]);
@@ -86,7 +88,7 @@ function paperOf(
     { ...firm, result: putInWords(firm.result) },
     {
       ...{ number: contentHash.slice(0, 8), revision: 0, state: 'draft, not reviewed', preparedBy: null },
-      ...{ contentHash, engineVersion: ENGINE_VERSION, date: firm.site.asOf, reason, reevaluation },
+      ...{ contentHash, engineVersion: ENGINE_VERSION, date: firm.site.asOf, reason, reevaluation, language },
     },
   );
 }

@@ -1,10 +1,14 @@
-import { Controller, Get, Param, Res } from '@nestjs/common';
+import { Controller, Get, Param, Query, Res } from '@nestjs/common';
 import type { FastifyReply } from 'fastify';
 import { frozenSite } from '#libs/contract/frozen-site.js';
 import { readSiteWithMathjs } from '#libs/contract/read-site-with-mathjs.js';
 import { zoneTableOf } from '#libs/contract/time-zone.js';
 import { InputProblem, type SiteThen } from '#libs/engine/index.js';
 import { WorkerPool } from '#libs/jobs/pool/worker-pool.js';
+import { againWords } from '#libs/present/again-words.js';
+import { catalogueOf } from '#libs/present/catalogue-of.js';
+import { inLanguage } from '#libs/present/language.js';
+import { LANGUAGES, type Language } from '#libs/present/languages.js';
 import { readRecord } from '#libs/store/records.js';
 import type { Revision } from '#libs/store/revision.js';
 import { Store } from '#libs/store/store.js';
@@ -39,11 +43,12 @@ export class ReevaluationController {
   }
 
   @Get('proposal.pdf')
-  @Needs('viewer', 'Draws the same as a paper, a draft of no revision; nothing is kept.')
-  async proposal(@Param() path: RevisionPath, @Res() reply: FastifyReply) {
+  @Needs('viewer', 'Draws the same as a paper, a draft of no revision: ?language=en or de. Nothing is kept.')
+  async proposal(@Param() path: RevisionPath, @Query() query: { language?: unknown }, @Res() reply: FastifyReply) {
+    const language = languageOf(query.language);
     const { revision, task } = await this.#asked(path, reply);
-    const reason = `Judged again beside ${revision.number}, revision ${revision.revision}.`;
-    const paper: ReevaluationPaperTask = { ...task, reason };
+    const reason = inLanguage(catalogueOf(language), () => againWords(revision));
+    const paper: ReevaluationPaperTask = { ...task, reason, language };
     const bytes = await this.pool.run<Uint8Array>('computeReevaluationPaper', paper);
     const filename = `${revision.number}-revision-${revision.revision}-again.pdf`;
     return reply
@@ -69,4 +74,13 @@ export class ReevaluationController {
     }
     return { site, record, zone: zoneTableOf(site.timeZone, record) };
   }
+}
+
+/** @throws InputProblem where no paper comes in what was asked for */
+function languageOf(asked: unknown): Language {
+  if (asked === undefined) return 'en';
+  const known = LANGUAGES.find((language) => language === asked);
+  if (known !== undefined) return known;
+  const found = JSON.stringify(String(asked).slice(0, 60));
+  throw new InputProblem([{ code: 'out-of-range', path: 'language', expected: LANGUAGES.join(' or '), found }]);
 }

@@ -11,12 +11,12 @@ export function printedReview({ signatures, findings, figures, handChecks, appro
     })),
     handChecks: handChecks.map((check) => {
       const label = figures.find(({ id }) => id === check.figure)?.label ?? check.figure;
-      return `${label} ${handCheckWords(check)}`;
+      return { figure: check.figure, label, said: handCheckWords(check) };
     }),
-    accepted: findings.flatMap(({ what, acceptance }) =>
+    accepted: findings.flatMap(({ id, what, acceptance }) =>
       acceptance === null
         ? []
-        : [{ what, reason: acceptance.reason, by: acceptance.by.name, date: acceptance.at.slice(0, 10) }],
+        : [{ id, what, reason: acceptance.reason, by: acceptance.by.name, date: acceptance.at.slice(0, 10) }],
     ),
     ownApproval: approval?.isOwn === true ? ownApproval() : null,
   };

@@ -1,6 +1,8 @@
 import { Inject, Injectable } from '@nestjs/common';
 import { ENGINE_VERSION, InputProblem } from '#libs/engine/index.js';
 import { WorkerPool } from '#libs/jobs/pool/worker-pool.js';
+import { catalogueOf } from '#libs/present/catalogue-of.js';
+import { inLanguage } from '#libs/present/language.js';
 import { replacedWords } from '#libs/present/review-words.js';
 import { refusals } from '#libs/review/refusals.js';
 import { afterEvent, type Review } from '#libs/review/review.js';
@@ -108,7 +110,8 @@ export class Reviews {
   async #print(revision: Revision, approved: Review): Promise<Uint8Array> {
     const draft = { ...(await frameOf(this.store, revision)), ...(await sheetOfRevision(this.store, revision)) };
     const preparedBy = draft.preparedBy ?? approved.preparers.map(({ name }) => name).join(', ');
-    const frame = { ...draft, state: 'approved' as const, preparedBy, review: printedReview(approved) };
+    const review = inLanguage(catalogueOf(draft.language ?? 'en'), () => printedReview(approved));
+    const frame = { ...draft, state: 'approved' as const, preparedBy, review };
     const bench = { store: this.store, pool: this.pool };
     const { result, proposal, proposed } = await recompute(bench, revision, frame);
     if (JSON.stringify(result) !== revision.result || proposed !== revision.proposed) {

@@ -16,6 +16,8 @@ export interface Duty {
   orderH: number | null;
   /** bus, in a network of several */
   bus?: string;
+  /** name of the network's own capacitors, where the row is about those */
+  capacitors?: string;
   source: string;
   /** null: not judged */
   verdict: Verdict | null;
@@ -26,6 +28,9 @@ export const EXCEEDED_RATIO = 1 + 1e-9;
 
 /** Share of a limit from which a duty is near it: voltages, and everything else. */
 export const NEAR_RATIO = { voltage: 0.95, other: 0.8 } as const;
+
+/** A limit exceeded without the bank already counts against the bank only beyond this share of the limit. */
+export const BASELINE_SHARE = 0.01;
 
 /** Where a value was met. */
 export interface Place {

@@ -18,6 +18,7 @@ import { closingStandings } from './closing-standings.js';
 import { type Duty, DutyRow, NEAR_RATIO } from './duty-row.js';
 import { type ExactInrush, exactInrush, type InrushStage, inrushStages } from './inrush.js';
 import type { LimitChoice } from './limit-editions.js';
+import { NetworkCapacitorDuties } from './network-capacitor-duties.js';
 import { NetworkDuties, networkLimits } from './network-duties.js';
 import { CAPACITOR_RULES, graver, type RuleSet, type Verdict } from './rules.js';
 import { type DutyVoltages, StageDuties } from './stage-duties.js';
@@ -79,9 +80,11 @@ export function judgeBank(model: NetworkModel, bank: Bank, levels: Level[], basi
   const limits = networkLimits({ ...basis, ...basis.voltages, ...empty, loadA: model.loadA });
   const stages = bank.groups.map((_, g) => new StageDuties(model, bank, g, basis));
   const bankDuties = new NetworkDuties(model, limits, !networkUnknown);
+  const beside = new NetworkCapacitorDuties(model, basis, !networkUnknown);
   eachFlow(model, tables, (flow) => {
     collector.take(flow);
     bankDuties.take(flow);
+    beside.take(flow);
     for (const stage of stages) stage.take(flow);
   });
   const charge = chargeStages(bank, basis.rules, basis.frequencyHz, basis.reconnectDelayS);
@@ -100,6 +103,7 @@ export function judgeBank(model: NetworkModel, bank: Bank, levels: Level[], basi
       ...exactInrushDuty(bank, inrush[g]!, exact[g] ?? null, basis.rules),
     ]),
     ...bankDuties.duties(),
+    ...beside.duties(),
   ];
   const nearPeak = nearestPeak(model, tables, new PeakFinder(model, bank, PEAK_REACH_H), PEAK_REACH_H);
   const distortingSharePct = plainSharePct(bank, basis);
@@ -117,7 +121,7 @@ export function judgeBank(model: NetworkModel, bank: Bank, levels: Level[], basi
     distortingSharePct,
     ripple,
     networkUnknown,
-    exceededAlready: bankDuties.exceededAlready,
+    exceededAlready: bankDuties.exceededAlready || beside.exceededAlready,
   };
 }
 

@@ -1,13 +1,10 @@
 import type { BusFlow, Flow } from '../network/bus-flow.js';
 import type { NetworkModel } from '../network/network-model.js';
 import { type CurrentLimits, chosenCurrentLimits } from './current-limits.js';
-import { type Duty, DutyRow, NEAR_RATIO, type Place, ratioVerdict } from './duty-row.js';
+import { BASELINE_SHARE, type Duty, DutyRow, NEAR_RATIO, type Place, ratioVerdict } from './duty-row.js';
 import { type LimitChoice, limitChoice } from './limit-editions.js';
 import type { RuleSet } from './rules.js';
 import { chosenVoltageLimits, type VoltageLimits } from './voltage-limits.js';
-
-/** A limit exceeded without the bank already counts against the bank only beyond this share of the limit. */
-const BASELINE_SHARE = 0.01;
 
 /** A primary is taken for medium voltage: no edition is milder there than at low voltage. */
 const MEDIUM_V = 10_000;

@@ -16,6 +16,7 @@ import {
   PEAK_REACH_H,
   plainSharePct,
 } from './judge-bank.js';
+import { NetworkCapacitorDuties } from './network-capacitor-duties.js';
 import { NetworkDuties, networkLimits } from './network-duties.js';
 import { graver, type Verdict } from './rules.js';
 import { StageDuties } from './stage-duties.js';
@@ -45,13 +46,15 @@ export function quickJudge(model: NetworkModel, bank: Bank, basis: JudgeBasis): 
   const limits = networkLimits({ ...basis, ...basis.voltages, ...ends, loadA: model.loadA });
   const stages = bank.groups.map((_, g) => new StageDuties(model, bank, g, basis));
   const network = new NetworkDuties(model, limits, known);
+  const beside = new NetworkCapacitorDuties(model, basis, known);
   eachFlow(model, bankModel(model, bank, levels), (flow) => {
     network.take(flow);
+    beside.take(flow);
     for (const stage of stages) stage.take(flow);
   });
   const site = { ...basis, nominalV: basis.voltages.nominalV, shortCircuitMva: ends.shortCircuitMva };
   const inrush = inrushStages(bank, site).flatMap((stage) => inrushDuty(bank, stage, basis.rules));
-  const duties = [...stages.flatMap((stage) => stage.duties()), ...network.duties(), ...inrush];
+  const duties = [...stages.flatMap((stage) => stage.duties()), ...network.duties(), ...beside.duties(), ...inrush];
   const worst = (rows: typeof duties): Verdict =>
     rows.reduce<Verdict>((verdict, duty) => graver(verdict, duty.verdict), 'clear');
   const absorbed = absorbedRipple(model, bank, levels, basis) !== null;

@@ -56,6 +56,32 @@ describe('the standings of a network', () => {
     expect(new Set(states.map(({ capacitorsIn }) => capacitorsIn[0]))).toEqual(new Set([0, 1, 2]));
   });
 
+  it('take a further bank at every state of its levels, all of it in first', () => {
+    const capacitors = [group(2), { ...group(1), ratedKvar: 50 }].map((each, g) => ({
+      name: `B, group ${g + 1}`,
+      bus: 0,
+      group: each,
+      switched: false,
+    }));
+    // 0, 25, 50 twice (two of 25 or one of 50, one admittance), 75, 100
+    const vectors = [
+      [2, 1],
+      [0, 0],
+      [1, 0],
+      [0, 1],
+      [1, 1],
+    ].map((counts) => Int32Array.from(counts));
+    const topology = row(1, { capacitors, banks: [{ name: 'B', bus: 0, firstEntry: 0, vectors }] });
+    expect(nameOf(topology)).toEqual([
+      '',
+      'B out',
+      'B with 1 + 0 stages in',
+      'B with 0 + 1 stages in',
+      'B with 1 + 1 stages in',
+    ]);
+    expect(networkStates(topology).map(({ capacitorsIn }) => capacitorsIn)).toEqual(vectors.map((v) => [...v]));
+  });
+
   // A board without its transformer is dead unless the coupler feeds it: such a standing is none to be judged.
   it('leave out a transformer only where no bus is dead without it', () => {
     expect(nameOf(row(2, { transformerOut: true }))).toEqual([

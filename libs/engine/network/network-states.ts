@@ -4,7 +4,7 @@ import { MOST_STATES, type NetworkState, type Topology } from './topology.js';
 
 /**
  * Every way the network can stand, the normal one first: couplers and generators marked `either` both ways, switched
- * capacitors at every count, and where asked each transformer out in turn. A transformer's absence that would leave a
+ * capacitors at every count, further banks at every level, and where asked each transformer out in turn. A transformer's absence that would leave a
  * bus without supply is left out: that board is then dead.
  * @param topology settled topology
  * @returns states; their number does not depend on the bank
@@ -32,6 +32,11 @@ export function networkStates(topology: Topology): NetworkState[] {
     if (!switched) continue;
     const fewer = Array.from({ length: group.count }, (_, count) => count);
     states = states.flatMap((s) => [s, ...fewer.map((count) => withCount(s, `${count} of ${name}`, i, count))]);
+    refuseTooMany(states.length);
+  }
+  for (const { name, firstEntry, vectors } of topology.banks) {
+    const lesser = vectors.slice(1);
+    states = states.flatMap((s) => [s, ...lesser.map((vector) => withVector(s, name, firstEntry, vector))]);
     refuseTooMany(states.length);
   }
   if (topology.transformerOut) {
@@ -89,6 +94,12 @@ function named(state: NetworkState, name: string, change: { coupler?: number; ge
 
 function withCount(state: NetworkState, name: string, entry: number, count: number): NetworkState {
   return { ...withName(state, name), capacitorsIn: state.capacitorsIn.map((now, i) => (i === entry ? count : now)) };
+}
+
+function withVector(state: NetworkState, name: string, firstEntry: number, vector: Int32Array): NetworkState {
+  const told = vector.every((count) => count === 0) ? `${name} out` : `${name} with ${vector.join(' + ')} stages in`;
+  const capacitorsIn = state.capacitorsIn.map((now, i) => vector[i - firstEntry] ?? now);
+  return { ...withName(state, told), capacitorsIn };
 }
 
 function refuseIslands(topology: Topology, normal: NetworkState): void {

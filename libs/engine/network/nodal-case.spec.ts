@@ -37,6 +37,7 @@ const topology: Topology = {
   motorKw: Float64Array.of(0, 0, 100),
   resistiveKw: Float64Array.of(0, 40, 0),
   capacitors: [{ name: 'old', bus: 2, group, switched: true }],
+  banks: [],
   transformerBus: [0, 1],
   bankBus: 0,
   couplingPoint: 0,

@@ -55,6 +55,20 @@ describe('a sound network', () => {
     expect(first!.xOhm).toBeCloseTo(0.08 * 0.05, 15);
   });
 
+  it('sets a further bank at every level its stages can make, what the network cannot tell apart once', () => {
+    const stage = { count: 2, ratedKvar: 25, ratedV: 440 };
+    const { banks, capacitors } = settled({ ...radial, banks: [{ name: 'west', bus: 'c', stages: [stage, stage] }] });
+    expect(capacitors.map(({ name, bus }) => [name, bus])).toEqual([
+      ['west, group 1', 2],
+      ['west, group 2', 2],
+    ]);
+    // four equal stages: 4, 0, 1, 2, 3 of them, whichever they are
+    expect(banks[0]!.vectors.map((vector) => vector.reduce((sum, count) => sum + count, 0))).toEqual([4, 0, 1, 2, 3]);
+    expect(problemsOf({ ...radial, banks: [{ bus: 'nowhere', stages: [stage] }] })).toMatchObject([
+      { path: 'network.banks[0].bus', found: '"nowhere"' },
+    ]);
+  });
+
   it('has x″·U²/S in a generator and 0.15 of that as its resistance: 400 kVA of 10 % at 400 V are 40 mΩ', () => {
     const generators = [{ bus: 'b', ratedKva: 400, subtransientPct: 10, state: 'running' as const }];
     const [generator] = settled({ ...radial, generators }).generators;

@@ -1,6 +1,8 @@
-import type { StageGroup } from '../layout/bank.js';
+import type { Bank, StageGroup, StageGroupInput } from '../layout/bank.js';
+import { bankLevels } from '../layout/levels.js';
 import { InputProblem, type Problem } from '../problem.js';
-import type { NetworkInput, Topology } from './topology.js';
+import { bankStates, stageKinds } from './stage-kinds.js';
+import type { FurtherBank, NetworkInput, Topology } from './topology.js';
 
 /** What a topology is settled with. */
 export interface TopologyBasis {
@@ -10,8 +12,8 @@ export interface TopologyBasis {
   transformerBuses: readonly (string | undefined)[];
   /** where the meter stands; at the primary that is the point of coupling unless another is named */
   meteredAt?: 'bus' | 'primary';
-  /** fills in a capacitor's defaults */
-  group(input: NonNullable<NetworkInput['capacitors']>[number]): StageGroup;
+  /** fills in a capacitor's defaults; the path is where it stands in the site file */
+  group(input: StageGroupInput, path: string): StageGroup;
 }
 
 /** Generator resistance where none is stated: R″ = 0.15·x″, customary for low-voltage machines. */
@@ -53,12 +55,7 @@ export function settleTopology(input: NetworkInput, basis: TopologyBasis): Topol
     }),
     motorKw: names.perBus(input.motors ?? [], 'network.motors'),
     resistiveKw: names.perBus(input.resistive ?? [], 'network.resistive'),
-    capacitors: (input.capacitors ?? []).map((capacitor, i) => ({
-      name: capacitor.name ?? `capacitors ${i + 1}`,
-      bus: names.at(capacitor.bus, `network.capacitors[${i}].bus`),
-      group: basis.group(capacitor),
-      switched: capacitor.switched ?? false,
-    })),
+    ...capacitorsOf(input, names, basis),
     transformerBus: basis.transformerBuses.map((bus, i) =>
       bus === undefined && input.buses.length === 1 ? 0 : names.at(bus, `supply.transformers[${i}].bus`),
     ),
@@ -69,6 +66,36 @@ export function settleTopology(input: NetworkInput, basis: TopologyBasis): Topol
   names.problems.push(...couplerProblems(topology), ...cableProblems(topology));
   if (names.problems.length > 0) throw new InputProblem(names.problems);
   return topology;
+}
+
+function capacitorsOf(input: NetworkInput, names: Names, basis: TopologyBasis): Pick<Topology, 'capacitors' | 'banks'> {
+  const capacitors = (input.capacitors ?? []).map((capacitor, i) => ({
+    name: capacitor.name ?? `capacitors ${i + 1}`,
+    bus: names.at(capacitor.bus, `network.capacitors[${i}].bus`),
+    group: basis.group(capacitor, `network.capacitors[${i}]`),
+    switched: capacitor.switched ?? false,
+  }));
+  const banks: FurtherBank[] = [];
+  for (const [i, further] of (input.banks ?? []).entries()) {
+    const path = `network.banks[${i}]`;
+    const name = further.name ?? `bank ${i + 1}`;
+    const bus = names.at(further.bus, `${path}.bus`);
+    const groups = further.stages.map((stage, g) => basis.group(stage, `${path}.stages[${g}]`));
+    banks.push({ name, bus, firstEntry: capacitors.length, vectors: furtherStates(groups, basis.nominalV) });
+    for (const [g, group] of groups.entries()) {
+      const part = groups.length === 1 ? name : `${name}, group ${g + 1}`;
+      capacitors.push({ name: part, bus, group, switched: false });
+    }
+  }
+  return { capacitors, banks };
+}
+
+// What the network can tell apart of a further bank's levels.
+function furtherStates(groups: StageGroup[], nominalV: number): Int32Array[] {
+  const bank: Bank = { groups, interStageUh: 0, interStageGiven: false, ambientCategory: null };
+  const vectors = bankLevels(bank, nominalV).flatMap((level) => level.vectors);
+  const states = bankStates(stageKinds(bank), vectors).map(({ vector }) => vector);
+  return [states[states.length - 1]!, ...states.slice(0, -1)];
 }
 
 function couplingPoint(input: NetworkInput, names: Names, basis: TopologyBasis): Topology['couplingPoint'] {

@@ -47,6 +47,13 @@ export interface CapacitorInput extends StageGroupInput {
   switched?: boolean;
 }
 
+/** A further bank with a controller of its own; what it stands at is none of this site's bank's doing. */
+export interface FurtherBankInput {
+  name?: string;
+  bus: string;
+  stages: StageGroupInput[];
+}
+
 /** The network of a site with several buses, all at the bus voltage. */
 export interface NetworkInput {
   buses: { name: string }[];
@@ -56,6 +63,7 @@ export interface NetworkInput {
   motors?: BusLoadInput[];
   resistive?: BusLoadInput[];
   capacitors?: CapacitorInput[];
+  banks?: FurtherBankInput[];
   /** bus the bank stands at; the first where absent */
   bankBus?: string;
   /** bus whose voltage the limits are held against, or "primary"; where absent the primary if the meter stands there, else the bank's bus */
@@ -90,6 +98,16 @@ export interface Generator {
   state: GeneratorInput['state'];
 }
 
+/** A further bank: entries of the network's capacitors that are switched together. */
+export interface FurtherBank {
+  name: string;
+  bus: number;
+  /** its first entry among the capacitors; one a group follows another */
+  firstEntry: number;
+  /** connected stages per group, one vector an electrical state: everything in first, then upwards from nothing */
+  vectors: Int32Array[];
+}
+
 /** The network with names resolved to indices and defaults filled in. */
 export interface Topology {
   buses: string[];
@@ -100,7 +118,9 @@ export interface Topology {
   motorKw: Float64Array;
   /** resistive load per bus [kW] */
   resistiveKw: Float64Array;
+  /** those of further banks last, one entry a group */
   capacitors: { name: string; bus: number; group: StageGroup; switched: boolean }[];
+  banks: FurtherBank[];
   /** bus of each transformer, in the order of the supply; empty where the source stands at the first bus */
   transformerBus: number[];
   bankBus: number;
@@ -114,7 +134,7 @@ export interface NetworkState {
   name: string;
   closedCouplers: boolean[];
   runningGenerators: boolean[];
-  /** capacitors that are in, per entry */
+  /** capacitors that are in, stages per entry */
   capacitorsIn: number[];
   /** transformer that is out, or null */
   transformerOut: number | null;
@@ -139,6 +159,7 @@ export function oneBus(transformers: number): Topology {
     motorKw: new Float64Array(1),
     resistiveKw: new Float64Array(1),
     capacitors: [],
+    banks: [],
     transformerBus: Array.from({ length: transformers }, () => 0),
     bankBus: 0,
     couplingPoint: 0,

@@ -11,21 +11,26 @@ import type { Study } from './study.js';
  * @source method-robustness
  */
 export function grownStudy(study: Study, factor: number): Study {
-  const times = (column: Float64Array): Float64Array => column.map((value) => value * factor);
   const { activeKw, laggingKvar, leadingKvar } = study.record;
   const load = {
     ...study.load,
-    activeKw: times(study.load.activeKw),
-    reactiveKvar: times(study.load.reactiveKvar),
+    activeKw: scaled(study.load.activeKw, factor),
+    reactiveKvar: scaled(study.load.reactiveKvar, factor),
   };
-  const scaled = {
+  const record = {
     ...study.record,
-    activeKw: times(activeKw),
-    laggingKvar: times(laggingKvar),
-    leadingKvar: times(leadingKvar),
+    activeKw: scaled(activeKw, factor),
+    laggingKvar: scaled(laggingKvar, factor),
+    leadingKvar: scaled(leadingKvar, factor),
   };
-  const meter: MeterAfter = meterAfter(scaled, load, oldBankKvar(study));
-  return { ...study, load, record: { ...scaled, ...meter } };
+  const meter: MeterAfter = meterAfter(record, load, oldBankKvar(study));
+  return { ...study, load, record: { ...record, ...meter } };
+}
+
+function scaled(column: Float64Array, factor: number): Float64Array {
+  const grown = new Float64Array(column.length);
+  for (let i = 0; i < column.length; i++) grown[i] = column[i]! * factor;
+  return grown;
 }
 
 function oldBankKvar({ site, record, turned }: Study): Float64Array {

@@ -36,6 +36,8 @@ function dutyReason(code: string, duty: Duty): Remark {
   if (duty.group !== null) values.group = duty.group + 1;
   if (duty.levelKvar !== null) values.levelKvar = duty.levelKvar;
   if (duty.orderH !== null) values.orderH = duty.orderH;
+  if (duty.bus !== undefined && duty.bus !== 'primary') values.bus = duty.bus;
+  if (duty.capacitors !== undefined) values.capacitors = duty.capacitors;
   if (duty.corner !== null) Object.assign(values, duty.corner);
   return remark(code, values, { unit: duty.unit, source: duty.source });
 }

@@ -28,6 +28,9 @@ const SEARCHES = {
   tariff: { steps: 20, closedIn: 1e-6 },
 } satisfies Record<TriedQuantity, { steps: number; closedIn: number }>;
 
+/** Intervals of moved records that are kept for the next way: all factors of quarter hours, the last three of minutes. */
+const KEPT_INTERVALS = 2_000_000;
+
 /** Ways and the record they are weighed on. */
 export interface WeighedWays {
   /** the record as metered */
@@ -123,6 +126,9 @@ export class MoneyMover {
     const known = this.#grown.get(factor);
     if (known !== undefined) return known;
     const made = grownScale(scale, factor);
+    const [oldest] = this.#grown.keys();
+    const room = KEPT_INTERVALS / scale.study.record.beginS.length;
+    if (oldest !== undefined && this.#grown.size + 1 > room) this.#grown.delete(oldest);
     this.#grown.set(factor, made);
     return made;
   }

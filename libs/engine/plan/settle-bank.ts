@@ -16,6 +16,7 @@ const MOST_REACTOR_PCT = 88;
  * A bank as the site file gives it, defaults filled in; where nameplate µF and mH stand, p is derived from them.
  * @param input the bank of the site file
  * @param frequencyHz f [Hz]
+ * @param path where it stands in the site file
  * @returns the bank, its assumptions, and findings where a stated p disagrees with the nameplate
  * @throws InputProblem where a reactor leaves no capacitor, or the inductance between stages is not above 0
  * @source method-bank
@@ -23,12 +24,15 @@ const MOST_REACTOR_PCT = 88;
 export function settleBank(
   input: BankInput,
   frequencyHz: number,
+  path = 'bank',
 ): { bank: Bank; assumptions: Remark[]; findings: Remark[] } {
   const assumptions: Remark[] = [];
   const findings: Remark[] = [];
-  const groups = input.stages.map((stage, g) => settleGroup(stage, g, { frequencyHz, assumptions, findings }));
+  const groups = input.stages.map((stage, g) =>
+    settleGroup(stage, `${path}.stages[${g}]`, { frequencyHz, assumptions, findings }),
+  );
   if (input.interStageUh === undefined && groups.length > 0) {
-    const place = { path: 'bank.interStageUh', unit: 'µH' };
+    const place = { path: `${path}.interStageUh`, unit: 'µH' };
     assumptions.push(remark('default.bank.interStageUh', { value: INTER_STAGE_UH }, place));
   }
   const bank: Bank = {
@@ -41,7 +45,7 @@ export function settleBank(
     throw new InputProblem([
       {
         code: 'out-of-range',
-        path: 'bank.interStageUh',
+        path: `${path}.interStageUh`,
         expected: 'more than 0: with none the closed form has no end',
         found: `${bank.interStageUh}`,
         unit: 'µH',
@@ -51,14 +55,23 @@ export function settleBank(
   return { bank, assumptions, findings };
 }
 
-interface GroupContext {
+/** What a group is settled with; its lines and findings are added to. */
+export interface GroupContext {
   frequencyHz: number;
   assumptions: Remark[];
   findings: Remark[];
 }
 
-function settleGroup(stage: StageGroupInput, g: number, context: GroupContext): StageGroup {
-  const path = `bank.stages[${g}]`;
+/**
+ * A group of equal stages, defaults filled in.
+ * @param stage as the site file gives it
+ * @param path where it stands there
+ * @param context frequency, and lists that receive what was taken and what disagrees
+ * @returns the group
+ * @throws InputProblem where a reactor leaves no capacitor
+ * @source method-bank
+ */
+export function settleGroup(stage: StageGroupInput, path: string, context: GroupContext): StageGroup {
   const reactorPct = reactorRatioPct(stage, path, context);
   if (!(reactorPct >= 0 && reactorPct < MOST_REACTOR_PCT)) {
     throw new InputProblem([

@@ -10,7 +10,7 @@ import type { Supply, SupplyInput } from '../supply/supply.js';
 import { fittedLoads } from './fitted-loads.js';
 import { loadProblems } from './load-problems.js';
 import { moneyPapers } from './money-papers.js';
-import { settleBank } from './settle-bank.js';
+import { settleGroup } from './settle-bank.js';
 import type { SettledSite } from './settled-site.js';
 import type { Site } from './site.js';
 
@@ -20,20 +20,16 @@ export interface Settled {
   assumptions: Remark[];
 }
 
-/**
- * The topology of a site with a network part.
- * @param site validated site
- * @returns the topology, or null for one bus
- * @throws InputProblem naming every part that stands nowhere
- */
-export function settledTopology(site: Site): Topology | null {
+// The topology of a site with a network part, null for one bus; what its capacitors took is said with the rest.
+function settledTopology(site: Site, assumptions: Remark[]): Topology | null {
   if (site.network === undefined) return null;
+  const context = { frequencyHz: site.frequencyHz, assumptions, findings: assumptions };
   return settleTopology(site.network, {
     nominalV: site.bus.nominalV,
     frequencyHz: site.frequencyHz,
     ...(site.meteredAt === undefined ? {} : { meteredAt: site.meteredAt }),
     transformerBuses: (site.supply.transformers ?? []).map(({ bus }) => bus),
-    group: (capacitor) => settleBank({ stages: [capacitor], interStageUh: 1 }, site.frequencyHz).bank.groups[0]!,
+    group: (stage, path) => settleGroup(stage, path, context),
   });
 }
 
@@ -82,7 +78,7 @@ export function settleSite(site: Site, record: LoadRecord | null): Settled {
     onExport: defaults.take(site.target?.onExport, 'importOnly', 'target.onExport'),
     supply: settleSupply(site.supply, defaults),
     loads: settleLoads(site, record, defaults),
-    topology: settledTopology(site),
+    topology: settledTopology(site, defaults.assumptions),
     emcClass: 2,
     limits: limitChoice(site.rules, site.limits),
     facts: siteFacts(site),
@@ -94,11 +90,33 @@ export function settleSite(site: Site, record: LoadRecord | null): Settled {
   }
   if (site.recordedBank === undefined) defaults.note('default.recordedBank', 'recordedBank', {});
   if (!hasTransformer) defaults.note('supply.noTransformer', 'supply.transformers', {});
-  if ((site.network?.cables ?? []).length > 0) defaults.note('network.cables.steady', 'network.cables', {});
+  noteNetwork(site, defaults);
   const { measured } = settled.facts;
   const fitted = measured?.use === 'fit' ? fittedLoads(site, settled, measured) : null;
   if (fitted !== null) settled.loads = fitted.loads;
   return { site: settled, assumptions: [...defaults.assumptions, ...(fitted?.lines ?? []), ...understood(site)] };
+}
+
+function noteNetwork(site: Site, defaults: Defaults): void {
+  if ((site.network?.cables ?? []).length > 0) defaults.note('network.cables.steady', 'network.cables', {});
+  for (const { name, bus, path } of switchedBeside(site)) {
+    defaults.note('network.besideNotSimulated', path, { name, bus });
+  }
+}
+
+// Whatever else is switched in the network has a controller, or a hand, that nobody told.
+function switchedBeside({ network }: Site): { name: string; bus: string; path: string }[] {
+  const sets = (network?.capacitors ?? []).map((set, i) => ({
+    ...set,
+    name: set.name ?? `capacitors ${i + 1}`,
+    path: `network.capacitors[${i}]`,
+  }));
+  const banks = (network?.banks ?? []).map(({ name, bus }, i) => ({
+    bus,
+    name: name ?? `bank ${i + 1}`,
+    path: `network.banks[${i}]`,
+  }));
+  return [...sets.filter(({ switched }) => switched), ...banks];
 }
 
 // What stood in another form is echoed as it was understood.

@@ -4,7 +4,7 @@ import { InputProblem, type Problem } from '#libs/engine/index.js';
 import { CSV_QUANTITIES, type CsvQuantity } from './csv-quantity.js';
 import type { HeaderColumn } from './header-column.js';
 
-/** One column, or three of which each holds a phase. */
+/** One column, or several that are added: three phases, two quadrants. */
 export type ColumnGroup = readonly HeaderColumn[];
 
 /** The columns that can give each quantity. */
@@ -62,7 +62,7 @@ function isCandidate(column: HeaderColumn, quantity: CsvQuantity, map: MeterMap)
 function best(columns: HeaderColumn[]): HeaderColumn[] {
   const rank = (column: HeaderColumn) =>
     (column.register === 'said' ? 8 : 0) +
-    (column.phase > 0 ? 4 : 0) +
+    (column.phase > 0 || column.quadrant > 0 ? 4 : 0) +
     (column.extreme ? 2 : 0) +
     (column.unit === null ? 1 : 0);
   const least = Math.min(...columns.map(rank));
@@ -80,8 +80,11 @@ const SUMMED: readonly CsvQuantity[] = [
   'connected',
 ];
 
-/** Columns of three phases as one group, each other column as its own; null where a phase that is needed is missing. */
+/** Parts of a whole as one group, each other column as its own; null where a phase that is needed is missing. */
 function phaseGroups(columns: HeaderColumn[], quantity: CsvQuantity): ColumnGroup[] | null {
+  if (columns.length > 0 && columns.every(({ quadrant }) => quadrant > 0)) return [columns];
+  const counted = columns.length === 3 && columns.every(({ countedPhase }) => countedPhase > 0);
+  if (counted) return [columns, ...columns.map((column) => [column])];
   if (columns.every(({ phase }) => phase === 0)) return columns.map((column) => [column]);
   const three = columns.toSorted((a, b) => a.phase - b.phase);
   if (three.length === 3 && three.every(({ phase }, index) => phase === index + 1)) return [three];

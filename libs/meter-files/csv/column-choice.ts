@@ -26,7 +26,7 @@ export interface ColumnChoice {
 }
 
 /** More than this are not worked out for a question. */
-const MOST_CHOICES = 12;
+const MOST_CHOICES = 16;
 
 const NO_UNIT: ReadUnit = { family: 'active', energy: false, times: 1, over: 1, smallMega: false };
 
@@ -63,7 +63,9 @@ function refuseMissing(candidates: Candidates, header: readonly HeaderColumn[], 
 }
 
 function combined(candidates: Candidates): ColumnSet[] {
-  const measured = times(reactiveSets(candidates), 'active', candidates.active, true);
+  const measured = times(reactiveSets(candidates), 'active', candidates.active, true).flatMap((set) =>
+    withCounterpart(set, candidates),
+  );
   // recorded kvar are not passed over because the kW beside them are missing
   const isRecorded = candidates.reactive.length + candidates.lagging.length + candidates.leading.length > 0;
   let sets = measured.length > 0 || isRecorded ? measured : workedOut(candidates);
@@ -82,7 +84,28 @@ function reactiveSets({ reactive, lagging, leading }: Candidates): ColumnSet[] {
   const halves = reactive.flatMap((whole) => leading.map((lead) => ({ lagging: whole, leading: lead })));
   const alone = lagging.length > 0 && leading.length === 0 ? lagging.map((lag) => ({ lagging: lag })) : [];
   const wholes = reactive.map((whole) => ({ reactive: whole }));
-  return pairs.length > 0 ? pairs : [...alone, ...halves, ...wholes];
+  if (pairs.length > 0) return pairs;
+  // two columns whose names say no more may be the two directions
+  const [first, second, ...others] = lagging.length + leading.length === 0 ? reactive : [];
+  const directions =
+    first !== undefined && second !== undefined && others.length === 0 && areAlike(first, second)
+      ? [
+          { lagging: first, leading: second },
+          { lagging: second, leading: first },
+        ]
+      : [];
+  return [...alone, ...halves, ...wholes, ...directions];
+}
+
+/** Two directions are measured in one unit. */
+function areAlike([a]: ColumnGroup, [b]: ColumnGroup): boolean {
+  return a!.register === b!.register && a!.unit?.energy === b!.unit?.energy && a!.unit?.times === b!.unit?.times;
+}
+
+/** A set, and where another column may hold what flows the other way, the set with it too. */
+function withCounterpart(set: ColumnSet, { active, exported }: Candidates): ColumnSet[] {
+  const other = active.length === 2 && exported.length === 0 ? active.find((group) => group !== set.active) : undefined;
+  return other === undefined || !areAlike(set.active!, other) ? [set] : [set, { ...set, exported: other }];
 }
 
 /** Columns from which kW and kvar can be worked out where the file lacks one or both; the most exact that are there. */

@@ -1,16 +1,17 @@
 import type { MeterMap } from '#libs/contract/meter-map.js';
-import { InputProblem } from '#libs/engine/index.js';
-import { columnsNamed } from './column-candidates.js';
+import { InputProblem, type Problem } from '#libs/engine/index.js';
+import { columnsNamed, namesOf } from './column-candidates.js';
 import { type ColumnChoice, columnChoices } from './column-choice.js';
 import type { CsvView } from './csv-view.js';
 import { type DayLayout, dayLayout } from './day-layout.js';
 import { daySlots } from './day-slots.js';
-import { type HeaderColumn, readHeaderColumn } from './header-column.js';
+import type { HeaderColumn } from './header-column.js';
+import { headerColumns } from './header-sets.js';
 import { headerWindows } from './header-windows.js';
 import { readNumberText } from './number-cell.js';
 import { RowCells } from './row-cells.js';
 import { type SideColumns, sideColumns } from './side-columns.js';
-import { chooseTimeColumns, isDated, isSerial, type TimeColumns } from './time-columns.js';
+import { chooseTimeColumns, isDated, isEpoch, isSerial, type TimeColumns } from './time-columns.js';
 import { statedRatios } from './transformer-ratio.js';
 import { readUnit } from './unit-text.js';
 
@@ -95,15 +96,26 @@ function isFinal({ data, header }: Candidate, { ended }: CsvView): boolean {
 }
 
 /**
- * Whether the rows look like data without names.
+ * Why rows that look like data can't be read: no row names their columns, or one does in words that say nothing.
  * @param view the bytes read so far
+ * @returns null where nothing looks like data
  */
-export function looksTabular(view: CsvView): boolean {
-  return DELIMITERS.some((separator) =>
-    rowsOf(view, separator, SAMPLE_ROWS).some(
-      ({ cells }) => cells.length > 1 && cells.some((cell) => isDated(cell) !== null) && cells.some(isNumber),
-    ),
-  );
+export function untoldColumns(view: CsvView): Problem | null {
+  for (const separator of DELIMITERS) {
+    const rows = rowsOf(view, separator, SAMPLE_ROWS);
+    const isData = ({ cells }: Row) =>
+      cells.length > 1 && cells.some((cell) => isDated(cell) !== null) && cells.some(isNumber);
+    const at = rows.findIndex(isData);
+    if (at < 0) continue;
+    const above = rows[at - 1];
+    const named = above !== undefined && mayName(above) && above.cells.length === rows[at]!.cells.length;
+    const found = named ? namesOf(headerColumns(above.cells)) : 'rows of data without names';
+    const expected = named
+      ? 'names that say active and reactive power or energy, or a map that numbers the columns'
+      : 'a header row that names the columns, or a map that numbers them';
+    return { code: 'no-active-column', row: named ? above.number : rows[at]!.number, expected, found };
+  }
+  return null;
 }
 
 function rowsOf(view: CsvView, separator: string, most: number): Row[] {
@@ -134,10 +146,11 @@ function candidatesAt(rows: Row[], separator: string, map: MeterMap): Candidate[
 
 function headless(rows: Row[], delimiter: number, { columns }: MeterMap): Candidate[] {
   const time = columns?.time ?? columns?.date;
-  const isTime = (cell: string, column: number) => isDated(cell) !== null || (column + 1 === time && isSerial(cell));
+  const isTime = (cell: string, column: number) =>
+    isDated(cell) !== null || (column + 1 === time && (isSerial(cell) || isEpoch(cell)));
   const row = rows.find(({ cells }) => cells.some(isTime));
   if (row === undefined) return [];
-  const header = row.cells.map((_, index) => readHeaderColumn('', index));
+  const header = headerColumns(row.cells.map(() => ''));
   const number = row.number - 1;
   const data = rows.filter((other) => other.number > number);
   return [
@@ -170,7 +183,7 @@ function candidateAt(rows: Row[], index: number, delimiter: number, map: MeterMa
   const under = rows[index + 1];
   const hasUnits = under !== undefined && isUnitRow(under, row);
   const names = hasUnits ? row.cells.map((name, column) => withUnit(name, under.cells[column])) : row.cells;
-  const header = names.map(readHeaderColumn);
+  const header = headerColumns(names);
   const roles = header.filter(({ role }) => role !== null);
   const said = map.headerRow !== undefined || map.columns !== undefined;
   if (!said && !namesDay(row) && (roles.length < 2 || roles.every(({ role }) => role === 'time'))) return [];
@@ -183,7 +196,7 @@ function candidateAt(rows: Row[], index: number, delimiter: number, map: MeterMa
 }
 
 function isDatedCell(cell: string, column: HeaderColumn | undefined): boolean {
-  return isDated(cell) !== null || (column?.role === 'time' && isSerial(cell));
+  return isDated(cell) !== null || (column?.role === 'time' && (isSerial(cell) || isEpoch(cell)));
 }
 
 /** The first rows from an index on that hold anything. */
@@ -267,12 +280,17 @@ function mappedTime(header: readonly HeaderColumn[], map: MeterMap, sample: read
     mark: beside?.mark ?? at!.mark,
     zone: beside?.zone ?? at!.zone,
     serial: sample.some((cells) => isSerial(cells[at!.index] ?? '')),
+    epoch: sample.some((cells) => isEpoch(cells[at!.index] ?? '')),
+    counted: beside !== undefined && sample.every((cells) => /^\d{1,3}$/.test(cells[beside.index] ?? '1')),
   };
 }
 
 function isNumber(text: string): boolean {
   if (text === '') return false;
-  const cell = { form: 'wrong' as const, value: 0 } as { form: import('./number-cell.js').NumberForm; value: number };
+  const cell = { form: 'wrong' as const, value: 0 } as {
+    form: import('./number-cell.js').NumberForm;
+    value: number;
+  };
   readNumberText(text, cell);
   return cell.form !== 'wrong' && cell.form !== 'missing';
 }

@@ -1,6 +1,7 @@
 import type { MeterMap, PowerFactorSign, QualityMeaning } from '#libs/contract/meter-map.js';
 import type { ReadOptions } from '../meter-format.js';
 import type { DateOrder } from '../time/stamp-text.js';
+import type { CountedClock } from '../time/counted-clock.js';
 import type { StampedRows } from '../time/stamped-rows.js';
 import type { ColumnChoice } from './column-choice.js';
 import type { CsvLayout } from './csv-layout.js';
@@ -31,6 +32,9 @@ export interface ReadRows {
   readonly qualities: RowQualities;
   readonly headers: SkippedRows;
   readonly totals: SkippedRows;
+  readonly texts: SkippedRows;
+  /** how a column counts the intervals of a day; null where none does */
+  readonly counted: CountedClock | null;
   /** columns of numbers, counted from 0, in the order of `rows.values` */
   readonly columns: readonly number[];
   /**

@@ -23,6 +23,7 @@ export function quantityNotes(
   return [
     note('file-read-as', { format: 'csv', columns: read.join('; ') }),
     ...unitNotes(columns, named),
+    ...nameNotes(file, columns, named),
     ...sourceNotes(found, meaning, named),
     ...(found.workedOut === null ? reactiveNotes(file, meaning, built) : workedOutNotes(found, meaning, named)),
     ...besideNotes(meaning, named),
@@ -45,6 +46,16 @@ function unitNotes(columns: readonly QuantityColumn[], named: Named): Remark[] {
   return [
     ...(mega.length > 0 ? [note('unit-read-as-mega', { columns: named(mega) })] : []),
     ...(watts.length > 0 ? [note('reactive-in-kilowatt', { columns: named(watts) })] : []),
+  ];
+}
+
+function nameNotes({ layout }: CsvFile, columns: readonly QuantityColumn[], named: Named): Remark[] {
+  const indexes = columns.map(({ column }) => column);
+  const quadrants = indexes.filter((index) => (layout.header[index]?.quadrant ?? 0) > 0);
+  const extremes = indexes.filter((index) => layout.header[index]?.extreme === true);
+  return [
+    ...(quadrants.length > 0 ? [note('quadrants-by-name', { columns: named(quadrants) })] : []),
+    ...(extremes.length > 0 ? [note('extremes-taken', { columns: named(extremes) })] : []),
   ];
 }
 

@@ -56,7 +56,8 @@ export function readUnder(file: CsvFile, meaning: CsvMeaning, room: Float64Array
     ...(unknown.rows > 0 ? [note('qualities-unknown', { codes: unknown.codes.join(', '), rows: unknown.rows })] : []),
     ...quantityNotes(file, meaning, { found, built }),
   ];
-  const left = skipped + built.withoutValue + grid.overruled + reader.headers.count + reader.totals.count;
+  const left =
+    skipped + built.withoutValue + grid.overruled + reader.headers.count + reader.totals.count + reader.texts.count;
   const counts = { format: 'csv', rowsRead: reader.rows.count, rejectedRows: left };
   return { columns: built.columns, duplicates: grid.duplicates, notes, counts, zone };
 }
@@ -71,8 +72,9 @@ export function stampRules({ layout, map, options, reader }: CsvFile, { order, d
   const zoneFromHeader = said === null && layout.time.zone !== null;
   const zone = said ?? layout.time.zone ?? options.siteTimeZone ?? null;
   const ranged = layout.days !== null || (!Number.isNaN(reader.rows.spanS) && map.stamp === undefined);
-  const elapsed = layout.days !== null && days === 'elapsed';
-  return { order, mark: ranged ? 'begin' : layout.time.mark, zone, zoneFromHeader, elapsed };
+  const { counted } = reader;
+  const elapsed = (layout.days !== null || counted !== null) && days === 'elapsed';
+  return { order, mark: ranged || counted?.first === 1 ? 'begin' : layout.time.mark, zone, zoneFromHeader, elapsed };
 }
 
 /** The rows of a file in time. */

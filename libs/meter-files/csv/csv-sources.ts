@@ -78,7 +78,7 @@ export function csvSources(
     kept: inner,
     registers: [...registers.keys()],
     falls,
-    phases: [...groups.values()].flatMap((group) => (group.length > 1 ? group.map(({ column }) => column) : [])),
+    phases: [...groups.values()].flatMap((group) => (group.length === 3 ? group.map(({ column }) => column) : [])),
     workedOut,
   };
 }

@@ -21,7 +21,13 @@ export interface DayLayout extends DaySlots {
  * @returns null where it has no such columns, or no column of dates alone
  */
 export function dayLayout(
-  { header, before }: { header: readonly HeaderColumn[]; before: readonly { cells: string[] }[] },
+  {
+    header,
+    before,
+  }: {
+    header: readonly HeaderColumn[];
+    before: readonly { cells: string[] }[];
+  },
   rows: readonly string[][],
   map: MeterMap,
 ): { time: TimeColumns; days: DayLayout } | null {
@@ -80,5 +86,5 @@ function dateColumn(
   const chosen = chooseTimeColumns(beside, sample);
   if (chosen !== null && chosen.clock >= 0) return null;
   const serial = sample.some((row) => isSerial(row[at.index] ?? ''));
-  return { stamp: at.index, clock: -1, end: -1, mark: null, zone: at.zone, serial };
+  return { stamp: at.index, clock: -1, end: -1, mark: null, zone: at.zone, serial, epoch: false, counted: false };
 }

@@ -10,7 +10,7 @@ import type { ReadRows } from './csv-meaning.js';
 import { type DayLayout, saysQuantity } from './day-layout.js';
 import type { DaySlot } from './day-slots.js';
 import { DecimalMark, KEPT_COLUMNS } from './decimal-mark.js';
-import { readHeaderColumn } from './header-column.js';
+import { headerColumns } from './header-sets.js';
 import type { RowCells } from './row-cells.js';
 import { RowQualities } from './row-qualities.js';
 import { isHeaderRow, isTotalRow, type SkippedRows, shapeProblem, skip } from './row-shape.js';
@@ -36,6 +36,8 @@ export class DayRows implements ReadRows {
   readonly qualities = new RowQualities([]);
   readonly headers: SkippedRows = { count: 0, first: 0 };
   readonly totals: SkippedRows = { count: 0, first: 0 };
+  readonly texts: SkippedRows = { count: 0, first: 0 };
+  readonly counted = null;
   readonly columns: number[] = [];
   /** names of the quantities, in the order in which they came */
   readonly #names: string[] = [];
@@ -101,7 +103,7 @@ export class DayRows implements ReadRows {
    */
   layoutOf(map: MeterMap): CsvLayout {
     this.problems.refuse();
-    const header = this.#names.map(readHeaderColumn);
+    const header = headerColumns(this.#names);
     const { time: _time, date: _date, clock: _clock, meter: _meter, quality: _quality, ...columns } = map.columns ?? {};
     const choices = columnChoices(header, { ...map, columns }, this.#layout.headerRow);
     return { ...this.#layout, names: this.#names, header, choices };

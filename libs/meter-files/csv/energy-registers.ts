@@ -13,7 +13,7 @@ export interface ColumnMoves {
   /** steps against the column's own direction, and steps along it */
   falls: number;
   rises: number;
-  /** the earliest value over the mean of the steps along the direction */
+  /** the earliest value over the mean of the steps along the direction; NaN where all are 0 */
   size: number;
 }
 
@@ -91,7 +91,8 @@ function heldBy({ column, register }: QuantityColumn, moves: ColumnMoves): 'regi
     return 'register';
   }
   if (!isSteady(moves)) return 'intervals';
-  if (register === 'maybe') return 'register';
+  // a column of zeros is no reading, one that stands still at a number is
+  if (register === 'maybe' && !Number.isNaN(size)) return 'register';
   if (count < REGISTER_ROWS || rises === 0) return 'intervals';
   return size >= 10 ? 'register' : 'either';
 }

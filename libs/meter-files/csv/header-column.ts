@@ -1,4 +1,5 @@
 import type { MeterColumn, VoltageBetween } from '#libs/contract/meter-map.js';
+import { obisQuantity } from '../obis/obis-quantity.js';
 import { areKnown, says, wordsOf } from './header-words.js';
 import { findUnit, type ReadUnit } from './unit-text.js';
 
@@ -20,6 +21,10 @@ export interface HeaderColumn {
   extreme: boolean;
   /** 1, 2 or 3 of a column of one phase, 0 of any other */
   phase: 0 | 1 | 2 | 3;
+  /** 1, 2 or 3 where a number may count phases or anything else, 0 of any other */
+  countedPhase: 0 | 1 | 2 | 3;
+  /** quadrant of reactive energy, 0 of any other */
+  quadrant: 0 | 1 | 2 | 3 | 4;
   /** what the name says a voltage is measured between */
   between: VoltageBetween | null;
   /** the name says a register that only rises; `reading` is a word that may mean the interval too */
@@ -40,7 +45,8 @@ export function readHeaderColumn(name: string, index: number): HeaderColumn {
   const misread = (found.unit?.family === 'voltage' || found.unit?.family === 'current') && says(words, 'reactive');
   const unit = misread ? null : found.unit;
   const { rest } = found;
-  const role = roleOf(words, unit);
+  const code = codeIn(name);
+  const role = code === null ? roleOf(words, unit) : code.role;
   const measured = role !== null && !UNMEASURED.includes(role);
   return {
     index,
@@ -50,12 +56,31 @@ export function readHeaderColumn(name: string, index: number): HeaderColumn {
     role,
     mark: role === 'time' ? markOf(words) : null,
     zone: role === 'time' ? zoneOf(name) : null,
-    extreme: says(words, 'extreme'),
+    extreme: says(wordsOf(rest.replace(/\d[\s_-]*min(?!\p{L})/giu, ' ')), 'extreme'),
     phase: phaseOf(rest),
+    countedPhase: 0,
+    quadrant: code?.quadrant ?? 0,
     between: role === 'voltage' ? betweenOf(rest) : null,
-    register: says(words, 'cumulative') ? 'said' : says(words, 'reading') ? 'maybe' : null,
+    register: registerOf(words, code?.cumulative === true),
     reactiveInWatt: unit?.family === 'active' && isReactiveRole(role),
   };
+}
+
+function registerOf(words: string[], coded: boolean): HeaderColumn['register'] {
+  if (says(words, 'cumulative')) return 'said';
+  return coded || says(words, 'reading') ? 'maybe' : null;
+}
+
+const CODE = /(?<![\d.:])(?:\d{1,3}-\d{1,3}:)?(\d{1,3})\.\d{1,3}\.\d{1,3}(?:[*&]\d{1,3})?(?![\d.:])/;
+
+/** What an identification code (OBIS) in a name says; a rate or a greatest value of a total is no column of a record. */
+function codeIn(name: string): (Pick<HeaderColumn, 'role' | 'quadrant'> & { cumulative: boolean }) | null {
+  const [code, group] = CODE.exec(name) ?? [];
+  if (code === undefined || Number(group) > 8) return null;
+  const found = obisQuantity(code);
+  if (found === null) return { role: null, quadrant: 0, cumulative: false };
+  const quadrant = found.quadrant ? ((Number(group) - 4) as 1 | 2 | 3 | 4) : 0;
+  return { role: found.quantity, quadrant, cumulative: found.cumulative };
 }
 
 const UNMEASURED: readonly MeterColumn[] = ['time', 'standby', 'powerFactor', 'meter', 'quality'];
@@ -92,12 +117,12 @@ function isReactiveRole(role: MeterColumn | null): boolean {
   return role === 'reactive' || role === 'lagging' || role === 'leading';
 }
 
-/** P+, P−, Q+, Q− (also A and R) name the direction by their sign. */
+/** P+, P−, Q+, Q− (also A and R, EA and ER, and the sign before the letter) name the direction by their sign. */
 function signWords(rest: string): string[] {
-  const sign = /(?:^|[\s_(])([paqr])\s?([+−-])(?=$|[\s_)])/i.exec(rest);
+  const sign = /(?:^|[\s_(])(?:e?([paqr])\s?([+−-])|([+−-])\s?([paqr]))(?=$|[\s_)])/i.exec(rest);
   if (sign === null) return [];
-  const reactive = /[qr]/i.test(sign[1]!);
-  const plus = sign[2] === '+';
+  const reactive = /[qr]/i.test(sign[1] ?? sign[4]!);
+  const plus = (sign[2] ?? sign[3]) === '+';
   if (reactive) return ['reactive', plus ? 'lagging' : 'leading'];
   return ['active', plus ? 'import' : 'export'];
 }

@@ -1,29 +1,42 @@
-// The trade's words in column names, in English, German, French and Spanish, without accents and in small letters.
+// The trade's words in column names, without accents and in small letters: English, German, French and Spanish in full, what
+// interval exports need in Dutch, Italian, Portuguese, Polish, Czech, Swedish, Danish, Finnish and Turkish.
 // A word ending in * stands for every word that begins with it.
 
 export const WORDS = {
-  reactive: 'reactive reactives reactiva reactivo reactif reactifs blind* var q',
+  reactive:
+    'reactive reactives reactiva reactivo reactif reactifs blind* reactief reactieve reaktiv* reattiva reattivo reativa ' +
+    'reativo biern* jalov* loiste* reaktif var q er',
   active:
-    'active activa activo actif actifs real wirk* p energy power energia energie puissance potencia leistung arbeit ' +
-    'usage consumption consumo consommation verbrauch* load last demand bezug* electricity stromverbrauch',
-  lagging: 'lag lagging inductive inductiva inductivo inductif induktiv* ind',
-  leading: 'lead leading capacitive capacitiva capacitivo capacitif kapazitiv* cap',
-  imported: 'import imported delivered del bezug* soutirage soutiree consumida positive positiv positiva',
+    'active activa activo actif actifs real wirk* actief actieve werkelijk* aktiv* attiva attivo ativa ativo czynn* cinn* ' +
+    'pato* aktif p power energy power energia energie energi puissance potencia leistung arbeit vermogen potenza effekt ' +
+    'moc vykon teho usage consumption consumo consommation verbrauch* verbruik* forbruk* forbrug* zuzycie spotreba load ' +
+    'last demand demanda bezug* afname profilwert* electricity stromverbrauch',
+  lagging:
+    'lag lagging inductive inductiva inductivo inductif induktiv* inductief inductieve induttiva induttivo indutiva ' +
+    'indutivo indukcyjn* induktif enduktif ind',
+  leading:
+    'lead leading capacitive capacitiva capacitivo capacitif kapazitiv* capacitief capacitieve capacitivo pojemnosciow* ' +
+    'kapacit* kapasit* cap',
+  imported:
+    'import imported delivered del bezug* soutirage soutiree consumida positive positiv positiva entrante afname ' +
+    'prelevata prelievo pobran* odber uttag',
   exported:
     'export exported received rec einspeis* ruckspeis* lieferung abgabe generation generated injection injectee ' +
-    'inyeccion inyectada vertida excedente feed exportada negative negativ negativa',
+    'inyeccion inyectada vertida excedente feed exportada negative negativ negativa saliente teruglevering* invoeding ' +
+    'immessa immissione oddan* dodavka inmatning',
   bank: 'bank capacitor capacitors kondensator* kompensation* compensation pfc condensateur* condensador* bateria',
   connected: 'connected zugeschaltet* conectada connectee',
   beside: 'after before without with nach vor ohne mit apres avant sans avec antes despues sin con',
   standby: 'standby generator* genset notstrom* emergency secours emergencia aggregat* ersatzstrom*',
-  voltage: 'voltage voltages volt volts spannung* tension tensione',
+  voltage: 'voltage voltages volt volts spannung* tension tensione spanning tensao napiec* napeti jannite',
   distortion: 'thd thdu thdi harmonic harmonics oberschwingung* unbalance frequency frequenz',
-  ratio: 'factor faktor leistungsfaktor facteur cos cosphi phi pf cosfi',
-  powerFactor: 'powerfactor leistungsfaktor* cos cosphi cosfi pf',
-  power: 'power puissance potencia leistung',
-  apparentOnly: 'apparent schein* aparente apparente',
-  current: 'current amps amperes strom stromstarke courant corriente intensite intensidad',
-  apparent: 'apparent schein* aparente apparente s',
+  ratio:
+    'factor faktor leistungsfaktor facteur fattore fator arbeidsfactor effektfaktor wspolczynnik cos cosphi phi pf cosfi',
+  powerFactor: 'powerfactor leistungsfaktor* arbeidsfactor effektfaktor cos cosphi cosfi pf',
+  power: 'power puissance potencia leistung potenza mocy',
+  apparentOnly: 'apparent schein* aparente apparente schijnbaar schijn* pozorn* zdanliv* skenbar*',
+  current: 'current amps amperes strom stromstarke courant corriente intensite intensidad stroom corrente prad proud',
+  apparent: 'apparent schein* aparente apparente schijnbaar schijn* pozorn* zdanliv* skenbar* s',
   cumulative:
     'cumulative cumulated cumul* kumul* zahlerstand* stand register registers index acumulada acumulado lectura releve',
   reading: 'reading readings ablesung',
@@ -32,18 +45,21 @@ export const WORDS = {
     'budget forecast prognose prevision',
   extreme: 'max maximum min minimum peak spitze hochst* maxi* mini* maxima minima pointe',
   quality: 'quality qualitat* qualite calidad status messwertstatus flag flags validity gultigkeit estado etat',
-  meter: 'meter meters zahler compteur contador device messstelle',
+  meter: 'meter meters zahler compteur contador contatore licznik device messstelle',
   meterName:
     'mpan mprn nmi pod prm ean cups meterid meterno meternumber zahlpunkt* zahlernummer zahlernr messlokation* messpunkt*',
   identity: 'id no nr number nummer numero serial name code identifier kennung bezeichnung point',
   time:
-    'date datum fecha time zeit* uhrzeit heure hora clock timestamp timestamps datetime stamp horodat* interval ' +
-    'period periode periodo begin beginning start end ending from to von bis ab beginn ende intervallbeginn intervallanfang intervallende debut fin inicio desde hasta',
+    'date datum fecha data dato tarih time zeit* uhrzeit heure hora ora tijd tijdstip tid tidpunkt godzina saat clock timestamp timestamps datetime stamp horodat* interval ' +
+    'period periode periodo hour hours stunde uur quarter begin beginning start end ending from to von bis ab beginn ende intervallbeginn intervallanfang intervallende debut fin inicio desde hasta inizio fine begintijd eindtijd tot',
+  /** names of a column that counts the hours or intervals of a day */
+  count:
+    'hour hours hora heure stunde uur ora godzina saat he hr period periode periodo interval quarter slot time zeit',
   neutral:
     'total sum avg average mean net gross main site plant all mittel mittelwert moyenne media meter l ll ln kanal channel',
   begin:
-    'begin begins beginning start starts starting from von ab beginn anfang intervallbeginn intervallanfang debut desde inicio',
-  end: 'end ends ending ende to until till bis intervallende fin jusqu* hasta',
+    'begin begins beginning start starts starting from von ab beginn anfang intervallbeginn intervallanfang debut desde inicio inizio begintijd',
+  end: 'end ends ending ende to until till bis intervallende fin jusqu* hasta fine eindtijd tot',
 } as const;
 
 export type WordGroup = keyof typeof WORDS;

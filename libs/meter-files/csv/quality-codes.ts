@@ -2,12 +2,18 @@ import type { QualityMeaning } from '#libs/contract/meter-map.js';
 import { wordsOf } from './header-words.js';
 
 const WORDS: Record<QualityMeaning, readonly string[]> = {
-  measured: 'a act actual ok valid validated good measured real gemessen gultig wahr mesure mesuree medido'.split(' '),
-  estimated:
-    'e est estimated estimate s sub subst substituted substitute ersatzwert ersatz geschatzt estime estimee estimado estimada interpolated'.split(
+  measured:
+    'a act actual ok valid validated good normal measured real gemessen gultig wahr mesure mesuree medido misurato gemeten'.split(
       ' ',
     ),
-  missing: 'missing fehlt fehlend null none invalid ungultig manquant manquante falta'.split(' '),
+  estimated:
+    'e est estimated estimate s sub subst substituted substitute ersatzwert ersatz geschatzt estime estimee estimado estimada interpolated edited corrected calculated manual geschat stimato'.split(
+      ' ',
+    ),
+  missing:
+    'missing bad error err failed failure fault invalid rejected fehlt fehlend fehler ungultig gestort null none manquant manquante erreur falta falla ontbreekt mancante'.split(
+      ' ',
+    ),
 };
 
 /** Letters that one file writes for measured or normal and another for missing or null. */

@@ -150,6 +150,8 @@ describe('delimited text', () => {
     expect(questions[0]!.readings.map(({ map }) => map.columns)).toEqual([
       { active: 2, reactive: 3 },
       { active: 2, reactive: 4 },
+      { active: 2, lagging: 3, leading: 4 },
+      { active: 2, lagging: 4, leading: 3 },
     ]);
     const { record } = await readMeterText(content, { map: { columns: { reactive: 'kvar net' } } });
     expect(Array.from(record.laggingKvar)).toEqual([9, 9]);

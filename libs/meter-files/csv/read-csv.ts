@@ -1,10 +1,10 @@
 import { Question, type QuestionReading } from '#libs/contract/question.js';
-import { InputProblem, type Remark } from '#libs/engine/index.js';
+import { InputProblem, type Problem, type Remark } from '#libs/engine/index.js';
 import type { MeterBytes } from '../meter-bytes.js';
 import type { MeterReading, ReadOptions } from '../meter-format.js';
 import { note } from '../note.js';
 import { closeReading } from '../record/close-reading.js';
-import { type CsvLayout, findLayout, looksTabular } from './csv-layout.js';
+import { type CsvLayout, findLayout, untoldColumns } from './csv-layout.js';
 import type { CsvFile } from './csv-meaning.js';
 import { DayRows } from './day-rows.js';
 import { MeterRows } from './meter-rows.js';
@@ -90,7 +90,7 @@ function askWhichMeter(file: Omit<CsvFile, 'reader'>, readers: Map<string, RowRe
 }
 
 async function layoutOf(buffer: RowBuffer, { map = {} }: ReadOptions): Promise<CsvLayout> {
-  let tabular = false;
+  let untold: Problem | null = null;
   for (;;) {
     while (isShort(buffer) && (await buffer.more())) buffer.refuseEndlessRow();
     const found = findLayout(buffer, map);
@@ -99,15 +99,12 @@ async function layoutOf(buffer: RowBuffer, { map = {} }: ReadOptions): Promise<C
       buffer.rowsBefore = found.from.rowsBefore;
       return found.layout;
     }
-    tabular ||= looksTabular(buffer);
+    untold ??= untoldColumns(buffer);
     if (buffer.ended) break;
     dropRows(buffer);
     await moreRows(buffer);
   }
-  if (tabular) {
-    const expected = 'a header row that names the columns, or a map that numbers them';
-    throw new InputProblem([{ code: 'no-active-column', row: 1, expected, found: 'rows of data without names' }]);
-  }
+  if (untold !== null) throw new InputProblem([untold]);
   const expected = 'a meter file: delimited text under a header row, or NEM12';
   throw new InputProblem([{ code: 'unknown-format', expected, found: 'a file without a row of column names' }]);
 }
@@ -199,7 +196,7 @@ function refuseOpenQuote(row: number): never {
 }
 
 function fileNotes(source: MeterBytes, { layout, reader }: CsvFile): Remark[] {
-  const { headers, totals } = reader;
+  const { headers, totals, texts } = reader;
   const encoding = source.encoding === 'utf-8' && !isUtf8(source.head) ? 'windows-1252' : source.encoding;
   return [
     ...(encoding === 'utf-8' ? [] : [note('encoding-converted', { encoding })]),
@@ -209,7 +206,11 @@ function fileNotes(source: MeterBytes, { layout, reader }: CsvFile): Remark[] {
       ? [note('quality-not-read', { columns: layout.side.unread.map((column) => layout.names[column]).join(', ') })]
       : []),
     ...(layout.time.serial ? [note('serial-dates', {})] : []),
+    ...(reader.counted === null
+      ? []
+      : [note('intervals-counted', { column: layout.names[layout.time.clock] ?? '', perDay: reader.counted.perDay })]),
     ...(totals.count > 0 ? [note('total-rows-left-out', { rows: totals.count })] : []),
+    ...(texts.count > 0 ? [note('text-rows-left-out', { rows: texts.count, first: texts.first })] : []),
   ];
 }
 

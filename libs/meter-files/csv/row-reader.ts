@@ -1,6 +1,7 @@
 import type { MeterMap } from '#libs/contract/meter-map.js';
 import { shown } from '#libs/contract/shown.js';
 import { RowProblems } from '../row-problems.js';
+import type { CountedClock } from '../time/counted-clock.js';
 import { StampedRows } from '../time/stamped-rows.js';
 import { CellNumbers } from './cell-numbers.js';
 import type { CsvLayout } from './csv-layout.js';
@@ -10,11 +11,14 @@ import { type NumberCell, readNumberText } from './number-cell.js';
 import type { QuickPlan } from './quick-rows.js';
 import type { RowCells } from './row-cells.js';
 import { RowQualities } from './row-qualities.js';
-import { isHeaderRow, isTotalRow, type SkippedRows, shapeProblem, skip } from './row-shape.js';
+import { isHeaderRow, isTextRow, isTotalRow, type SkippedRows, shapeProblem, skip, sumsUp } from './row-shape.js';
 import { RowStamps } from './row-stamps.js';
 
 const YES = /^(?:1|1\.0|true|yes|on|y|ja|an|oui|si|sí|ein)$/i;
 const NO = /^(?:0|0\.0|false|no|off|n|nein|aus|non)$/i;
+
+/** Rows without a stamp that are held against the sums of the columns. */
+const MOST_UNSTAMPED = 4;
 
 /** Reads row after row into columns: any quoting, any stamp, any number; slow and complete. */
 export class RowReader implements ReadRows {
@@ -25,6 +29,7 @@ export class RowReader implements ReadRows {
   readonly qualities: RowQualities;
   readonly headers: SkippedRows = { count: 0, first: 0 };
   readonly totals: SkippedRows = { count: 0, first: 0 };
+  readonly texts: SkippedRows = { count: 0, first: 0 };
   /** columns of numbers, counted from 0, in the order of `rows.values` */
   readonly columns: readonly number[];
   readonly #layout: CsvLayout;
@@ -33,6 +38,7 @@ export class RowReader implements ReadRows {
   readonly #lenient: ReadonlySet<number>;
   readonly #numbers: CellNumbers;
   readonly #cell: NumberCell = { form: 'missing', value: 0 };
+  #unstamped = 0;
 
   constructor(layout: CsvLayout, map: MeterMap) {
     const used = layout.choices.flatMap(({ columns }) => columns);
@@ -52,9 +58,13 @@ export class RowReader implements ReadRows {
   /** What the quick lane may do for this file, or null where it needs the general one: states, qualities, meters, serial dates, a clock time apart. */
   quickPlan(): QuickPlan | null {
     const { time, names, delimiter, side } = this.#layout;
-    if (time.clock >= 0 || time.serial || this.#standby.size > 0) return null;
+    if (time.clock >= 0 || time.serial || time.epoch || this.#standby.size > 0) return null;
     if (side.meter.length + side.quality.length > 0) return null;
     return { delimiter, width: names.length, stamp: time.stamp, end: time.end, columns: this.columns };
+  }
+
+  get counted(): CountedClock | null {
+    return this.stamps.counted;
   }
 
   /**
@@ -87,11 +97,23 @@ export class RowReader implements ReadRows {
     for (let k = 0; k < this.columns.length; k++) this.rows.values[k]![index] = this.#number(cells, k, index);
   }
 
-  /** Repeated headers and rows of totals. */
+  /** Repeated headers, rows of totals and lines of text. */
   #isSkipped(cells: RowCells, rowNumber: number): boolean {
     const texts = cells.texts();
-    if (isHeaderRow(texts, this.#layout.names)) return skip(this.headers, rowNumber);
-    return isTotalRow(texts, this.#layout.time.stamp) && skip(this.totals, rowNumber);
+    const { names, time } = this.#layout;
+    if (isHeaderRow(texts, names)) return skip(this.headers, rowNumber);
+    if (isTotalRow(texts, time.stamp) || this.#sumsUpRows(texts)) return skip(this.totals, rowNumber);
+    return isTextRow(texts) && skip(this.texts, rowNumber);
+  }
+
+  /** A row without a stamp holds totals where each of its numbers sums up the column above it. */
+  #sumsUpRows(texts: readonly string[]): boolean {
+    const { stamp, clock } = this.#layout.time;
+    if (texts[stamp] !== '' || (clock >= 0 && texts[clock] !== '') || ++this.#unstamped > MOST_UNSTAMPED) return false;
+    return this.columns.every((column) => {
+      readNumberText(texts[column] ?? '', this.#cell);
+      return sumsUp(texts[column] ?? '', this.#cell.value, this.valuesOf(column));
+    });
   }
 
   #isWhole(cells: RowCells, row: number): boolean {

@@ -2,7 +2,10 @@ import type { Problem } from '#libs/engine/index.js';
 import type { RowCells } from './row-cells.js';
 
 const TOTAL =
-  /^(?:grand )?(?:total|totals|sum|summe|gesamt|gesamtsumme|somme|suma|mean|average|mittelwert|moyenne|promedio|max|maximum|min|minimum)\b/i;
+  /^(?:grand )?(?:total|totals|totaal|totale|totaux|sum|summe|gesamt|gesamtsumme|somme|somma|suma|soma|razem|toplam|mean|average|avg|mittelwert|moyenne|promedio|media|gemiddelde|max|maximum|maximo|massimo|min|minimum|minimo)\b/i;
+const LONGEST_TEXT = 300;
+/** Words before any digit; names of months and days may begin a stamp that was cut off. */
+const TEXT = /^[^\d\p{L}]*(?!jan|feb|mar|apr|may|mai|jun|jul|aug|sep|oct|okt|nov|dec|dez)\p{L}[^\d]*\p{L}{3}/iu;
 
 /** Rows that were read but hold no interval. */
 export interface SkippedRows {
@@ -42,6 +45,36 @@ export function isHeaderRow(texts: readonly string[], names: readonly string[]):
 export function isTotalRow(texts: readonly string[], stamp: number): boolean {
   const first = texts.findIndex((text) => text !== '');
   return (first === stamp || texts[stamp] === '') && TOTAL.test(texts[first] ?? '');
+}
+
+/**
+ * Whether a row is a line of text among the data, such as the end of a report: one cell, and words in it.
+ * @param texts the row
+ */
+export function isTextRow(texts: readonly string[]): boolean {
+  const said = texts.filter((text) => text !== '');
+  if (said.length !== 1 || said[0]!.length > LONGEST_TEXT) return false;
+  return TEXT.test(said[0]!.normalize('NFD').replace(/\p{M}/gu, ''));
+}
+
+/**
+ * Whether a number sums up a column: its sum, its mean, its greatest or its least value as far as decimals allow.
+ * @param text the number as it is written
+ * @param value the number
+ * @param values of the column
+ */
+export function sumsUp(text: string, value: number, values: Float64Array): boolean {
+  let [sum, count, most, least] = [0, 0, Number.NEGATIVE_INFINITY, Number.POSITIVE_INFINITY];
+  for (const one of values) {
+    if (Number.isNaN(one)) continue;
+    sum += one;
+    count++;
+    most = Math.max(most, one);
+    least = Math.min(least, one);
+  }
+  if (count < 2) return false;
+  const rounded = 0.5 * 10 ** -(/[.,](\d+)\D*$/.exec(text)?.[1]?.length ?? 0);
+  return [sum, sum / count, most, least].some((one) => Math.abs(value - one) <= rounded + 1e-9 * Math.abs(one));
 }
 
 /**

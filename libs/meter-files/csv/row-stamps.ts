@@ -1,6 +1,8 @@
 import { dayNumber } from '#libs/engine/index.js';
 import { mixedIntervals } from '../record/mixed-intervals.js';
 import type { RowProblems } from '../row-problems.js';
+import { type CountedClock, settleCounts } from '../time/counted-clock.js';
+import { readEpochStamp } from '../time/epoch-stamp.js';
 import { readDayFraction, readSerialStamp } from '../time/serial-dates.js';
 import { datePartsOf, readStamp, type Stamp } from '../time/stamp-text.js';
 import type { StampedRows } from '../time/stamped-rows.js';
@@ -14,6 +16,8 @@ const MOST_OFFSETS = 4;
 /** Reads the stamps of rows and keeps them, checking that all are written the same way. */
 export class RowStamps {
   readonly rows: StampedRows;
+  /** how the clock column counts the intervals of a day, once all rows are read; null where it does not */
+  counted: CountedClock | null = null;
   readonly #time: TimeColumns;
   readonly #problems: RowProblems;
   readonly #offsets = new Set<number>();
@@ -63,7 +67,9 @@ export class RowStamps {
 
   /** A date alone is midnight in files that drop the clock time there; beside midnights written out it is a broken stamp. */
   end(): void {
+    if (this.#time.counted && this.rows.count > 0) this.#settleCounts();
     if (this.#dates === 0) return;
+    if (this.#dates === this.rows.count) this.#refuseSharedDates();
     const midnights = this.rows.clockS.subarray(0, this.rows.count).filter((clockS) => clockS === 0).length;
     if (midnights === this.#dates) return;
     const expected = 'a date and a time, as in other rows of midnight';
@@ -71,15 +77,51 @@ export class RowStamps {
     this.#problems.add({ code: 'bad-time', ...place, expected, found: 'a date alone' });
   }
 
+  #settleCounts(): void {
+    const { rows } = this;
+    let least = Number.POSITIVE_INFINITY;
+    let most = 0;
+    for (const number of rows.clockS.subarray(0, rows.count)) {
+      least = Math.min(least, number);
+      most = Math.max(most, number);
+    }
+    const counted = settleCounts(rows);
+    if (counted !== null) {
+      this.counted = counted === 'clock' ? null : counted;
+      return;
+    }
+    const expected = 'hours 1 to 24 or 0 to 23, or intervals of a day counted alike, such as 1 to 48 or 1 to 96';
+    const place = { row: rows.rowNumber[0]!, column: this.#time.clock + 1 };
+    this.#problems.add({
+      code: 'bad-time',
+      ...place,
+      expected,
+      found: `${least} to ${most}`,
+    });
+  }
+
+  /** Dates without clock times say when a day is, not when in it a row is. */
+  #refuseSharedDates(): void {
+    const { rows } = this;
+    let shared = 0;
+    for (let i = 1; i < rows.count; i++) if (rows.dateKey[i] === rows.dateKey[i - 1]) shared++;
+    if (shared < rows.count / 2) return;
+    const expected = 'a clock time beside the date, where a day has several rows';
+    const place = { row: rows.rowNumber[0]!, column: this.#time.stamp + 1 };
+    this.#problems.add({ code: 'bad-time', ...place, expected, found: 'a date alone' });
+  }
+
   #stampOf(text: string): Stamp | null {
+    if (this.#time.epoch) return readEpochStamp(text);
     return (this.#time.serial ? readSerialStamp(text) : null) ?? readStamp(text);
   }
 
   #clockOf(text: string): Stamp | null {
-    const clockS = this.#time.serial ? readDayFraction(text) : null;
-    return clockS === null
-      ? readStamp(text)
-      : { dateKey: null, dateForm: 'yearFirst', clockS, offsetS: null, untilS: null };
+    const { serial, counted } = this.#time;
+    const bare = { dateKey: null, dateForm: 'yearFirst' as const, offsetS: null, untilS: null };
+    if (counted) return /^\d{1,4}$/.test(text) ? { ...bare, clockS: Number(text) } : null;
+    const clockS = serial ? readDayFraction(text) : null;
+    return clockS === null ? readStamp(text) : { ...bare, clockS };
   }
 
   #refuse(row: number, expected: string, cells: RowCells): void {

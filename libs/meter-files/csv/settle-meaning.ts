@@ -101,8 +101,9 @@ function openPoints(file: CsvFile): OpenPoints {
 }
 
 /** Counted columns of a day may follow the clock or the time passed; where there is one for a 25th hour, it is the latter. */
-function dayMeanings({ layout: { days }, map }: CsvFile): CsvMeaning['days'][] {
+function dayMeanings({ layout: { days }, reader: { counted }, map }: CsvFile): CsvMeaning['days'][] {
   if (map.dayColumns !== undefined) return [map.dayColumns];
+  if (counted !== null) return counted.hasFurtherHour ? ['elapsed'] : ['clock', 'elapsed'];
   if (days === null || !days.counted) return ['clock'];
   return days.slots.some(({ beginS }) => beginS >= 86_400) ? ['elapsed'] : ['clock', 'elapsed'];
 }

@@ -1,6 +1,8 @@
 import { readDayFraction, readSerialStamp } from '../time/serial-dates.js';
 import { type DateForm, readStamp } from '../time/stamp-text.js';
+import { readEpochStamp } from '../time/epoch-stamp.js';
 import type { HeaderColumn } from './header-column.js';
+import { says, wordsOf } from './header-words.js';
 
 /** Where a row's stamp stands. */
 export interface TimeColumns {
@@ -16,10 +18,14 @@ export interface TimeColumns {
   zone: string | null;
   /** stamps are a spreadsheet's serial dates */
   serial: boolean;
+  /** stamps count seconds or milliseconds since 1970 */
+  epoch: boolean;
+  /** `clock` counts the hours or intervals of a day in whole numbers */
+  counted: boolean;
 }
 
 /** What the cells of a column hold. */
-export type TimeContent = 'stamp' | 'date' | 'clock' | 'serial' | 'serialDay' | 'fraction' | null;
+export type TimeContent = 'stamp' | 'date' | 'clock' | 'serial' | 'serialDay' | 'epoch' | 'fraction' | null;
 
 /**
  * What a column holds, judged by its first cells.
@@ -45,11 +51,12 @@ function contentOf(cell: string): TimeContent {
 
 function numberContent(cell: string): TimeContent {
   if (readSerialStamp(cell) !== null) return /[.,]/.test(cell) ? 'serial' : 'serialDay';
+  if (readEpochStamp(cell) !== null) return 'epoch';
   return readDayFraction(cell) === null ? null : 'fraction';
 }
 
 /** Contents that only a column named for its time may have: numbers else. */
-const NUMBERS: readonly TimeContent[] = ['serial', 'serialDay', 'fraction'];
+const NUMBERS: readonly TimeContent[] = ['serial', 'serialDay', 'epoch', 'fraction'];
 
 /**
  * Whether a text is a serial date, taken by itself.
@@ -57,6 +64,14 @@ const NUMBERS: readonly TimeContent[] = ['serial', 'serialDay', 'fraction'];
  */
 export function isSerial(cell: string): boolean {
   return readSerialStamp(cell) !== null;
+}
+
+/**
+ * Whether a text counts seconds or milliseconds since 1970.
+ * @param cell text without surrounding blanks
+ */
+export function isEpoch(cell: string): boolean {
+  return readEpochStamp(cell) !== null;
 }
 
 /**
@@ -82,18 +97,53 @@ export function chooseTimeColumns(columns: readonly HeaderColumn[], rows: readon
   }
   const named = columns.filter(({ role }) => role === 'time');
   const unused = columns.filter(({ role }) => role === null || role === 'time');
-  return chosen(named, held) ?? chosen(unused, held) ?? chosenUnread(named, rows);
+  const counting = unused.filter((column) => countsIntervals(column, rows));
+  return chosen(named, held, counting) ?? chosen(unused, held, counting) ?? chosenUnread(named, rows);
 }
 
-function chosen(columns: readonly HeaderColumn[], held: Map<HeaderColumn, TimeContent>): TimeColumns | null {
+/** A column named for the hours or intervals of a day that holds whole numbers. */
+function countsIntervals({ name, index }: HeaderColumn, rows: readonly string[][]): boolean {
+  if (!says(wordsOf(name), 'count')) return false;
+  const cells = rows.map((row) => row[index] ?? '').filter((cell) => cell !== '');
+  return cells.length > 0 && cells.every((cell) => /^\d{1,4}$/.test(cell));
+}
+
+function chosen(
+  columns: readonly HeaderColumn[],
+  held: Map<HeaderColumn, TimeContent>,
+  counting: readonly HeaderColumn[],
+): TimeColumns | null {
   const holding = (...contents: TimeContent[]) => columns.filter((column) => contents.includes(held.get(column)!));
   const isSerialColumn = (column: HeaderColumn) => NUMBERS.includes(held.get(column)!);
   const stamps = beginAndEnd(holding('stamp')) ?? beginAndEnd(holding('serial'));
-  if (stamps !== null) return { stamp: stamps.at.index, clock: -1, ...rest(stamps, null, isSerialColumn(stamps.at)) };
+  if (stamps !== null)
+    return {
+      stamp: stamps.at.index,
+      clock: -1,
+      ...rest(stamps, null, isSerialColumn(stamps.at)),
+    };
+  const epochs = beginAndEnd(holding('epoch'));
+  if (epochs !== null)
+    return {
+      stamp: epochs.at.index,
+      clock: -1,
+      ...rest(epochs, null, false),
+      epoch: true,
+    };
   const dates = beginAndEnd(holding('date', 'serialDay'));
   if (dates === null) return null;
   const serial = isSerialColumn(dates.at);
   const clocks = beginAndEnd(serial ? holding('clock', 'fraction') : holding('clock'));
+  const counts = clocks === null ? beginAndEnd([...counting]) : null;
+  if (counts !== null) {
+    return {
+      stamp: dates.at.index,
+      clock: counts.at.index,
+      ...rest(counts, dates.at, serial),
+      end: -1,
+      counted: true,
+    };
+  }
   if (clocks === null) return serial ? { stamp: dates.at.index, clock: -1, ...rest(dates, null, true) } : null;
   return { stamp: dates.at.index, clock: clocks.at.index, ...rest(clocks, dates.at, serial) };
 }
@@ -101,6 +151,8 @@ function chosen(columns: readonly HeaderColumn[], held: Map<HeaderColumn, TimeCo
 function rest(found: { at: HeaderColumn; end: HeaderColumn | null }, date: HeaderColumn | null, serial: boolean) {
   return {
     serial,
+    epoch: false,
+    counted: false,
     end: found.end?.index ?? -1,
     mark: found.at.mark ?? date?.mark ?? null,
     zone: found.at.zone ?? date?.zone ?? null,

@@ -27,7 +27,8 @@ export class QuadrantReader {
   constructor(map: MeterMap) {
     this.mark = new DecimalMark(map.decimal, SEMICOLON);
     this.#numbers = new CellNumbers(this.mark, this.#problems);
-    const time = { stamp: 0, clock: -1, end: -1, mark: map.stamp ?? null, zone: null, serial: false };
+    const beginning = { stamp: 0, clock: -1, end: -1, serial: false, epoch: false, counted: false };
+    const time = { ...beginning, mark: map.stamp ?? null, zone: null };
     this.#stamps = new RowStamps(this.rows, time, this.#problems);
   }
 

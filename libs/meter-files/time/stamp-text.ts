@@ -37,6 +37,14 @@ const FOUR_DIGITS = /^(\d{2})(\d{2})$/;
  */
 export function readStamp(text: string): Stamp | null {
   if (text.length > 64 || !/\d/.test(text)) return null;
+  const weekday = WEEKDAY.exec(text)?.[0];
+  return readBare(text) ?? (weekday === undefined ? null : readBare(text.slice(weekday.length)));
+}
+
+/** A day of the week may stand before the date; it is left unread, since the date says it. */
+const WEEKDAY = /^[a-zà-ÿ]{2,10}\.?,?\s+(?=\d)/i;
+
+function readBare(text: string): Stamp | null {
   return compact(text) ?? dateAndClock(text) ?? range(text) ?? clockOnly(text) ?? dateOnly(text);
 }
 

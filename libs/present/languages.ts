@@ -1,0 +1,3 @@
+/** The languages papers come in, by ISO 639. */
+export const LANGUAGES = ['en', 'de'] as const;
+export type Language = (typeof LANGUAGES)[number];
