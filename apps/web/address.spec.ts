@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { reevaluationAddress, readAddress, siteAddress, stationOfPath } from './address.js';
+import { readAddress, reevaluationAddress, siteAddress, stationOfCode, stationOfPath } from './address.js';
 
 describe('the station of a field', () => {
   it.each([
@@ -9,6 +9,7 @@ describe('the station of a field', () => {
     ['target.powerFactor', 'need', 'the target is the need’s slider'],
     ['bank.stages[0].ratedKvar', 'bank', 'a stage'],
     ['catalogue.ratedV', 'bank', 'what can be bought'],
+    ['papers.tariff', 'money', 'a shared paper stands in for the tariff'],
     ['bank.mainDevice.ratedA', 'network', 'what is fitted stands beside the table of devices'],
     ['bank.stages[2].fuseA', 'network', 'of a stage as well'],
     ['bank.stages[0].reactorPct', 'bank', 'but its ratio is the stage’s own'],
@@ -57,5 +58,17 @@ describe('an address', () => {
     ]) {
       expect(readAddress(hash).page).toBe('unknown');
     }
+  });
+
+  it('of a remark without a field is the station it is about', () => {
+    const codes = [
+      'money.sameLoad',
+      'target.missed',
+      'layout.noCandidate',
+      'loads.fast',
+      'record.partYear',
+      'peak.near',
+    ];
+    expect(codes.map(stationOfCode)).toEqual(['money', 'need', 'bank', 'supply', 'record', 'network']);
   });
 });

@@ -61,8 +61,19 @@ export function stationOfPath(path: string): Station {
   if (['target'].includes(first)) return 'need';
   if (['bank', 'control', 'catalogue'].includes(first)) return 'bank';
   if (['recordedBank', 'timeZone', 'estimate', 'recordId'].includes(first)) return 'record';
-  if (['tariff', 'prices', 'finance', 'currency'].includes(first)) return 'money';
+  if (['tariff', 'prices', 'finance', 'currency', 'papers'].includes(first)) return 'money';
   return 'supply';
+}
+
+/** Where what a remark without a field is about is looked at, by the first word of its code. */
+export function stationOfCode(code: string): Station {
+  const [first = ''] = code.split('.');
+  if (['money', 'prices', 'search', 'papers'].includes(first)) return 'money';
+  if (['need', 'target'].includes(first)) return 'need';
+  if (['layout', 'bank', 'switchings', 'operation', 'reconnection'].includes(first)) return 'bank';
+  if (['supply', 'site', 'loads', 'understood', 'measured'].includes(first)) return 'supply';
+  if (['record', 'recordedBank', 'estimate'].includes(first)) return 'record';
+  return 'network';
 }
 
 function subscribe(changed: () => void): () => void {

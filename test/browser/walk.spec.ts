@@ -66,8 +66,17 @@ describe.runIf(CHROMIUM !== null)('the whole job, from an empty database to a do
     await page.mouse.up();
     await expect.poll(() => figure(page)).not.toBe(before);
     await page.getByRole('button', { name: 'Add a stage' }).click();
+    await chooseSharedTariff(page, server);
     await page.getByRole('button', { name: 'Compute and keep' }).click();
     await page.getByText('revision 2, draft').waitFor({ timeout: 60_000 });
+    await page.getByText('Revision 2 was made with version 1, from 2026-01-01, and keeps it.').waitFor();
+    await page.getByLabel('the tariff is').selectOption({ label: 'the site’s own' });
+    expect(await page.getByLabel('kvarh per kWh').inputValue()).toBe('0.33');
+    await page.getByRole('button', { name: 'Put back' }).click();
+    await page.getByText('“Valley supply”, version 1, holds from').waitFor();
+
+    await station(page, 'Bank').click();
+    await bringsBackItsWorking(page, /^The supply’s current falls/);
 
     await station(page, 'Proposal').click();
     const [download] = await Promise.all([
@@ -122,6 +131,32 @@ describe.runIf(CHROMIUM !== null)('the whole job, from an empty database to a do
     expect(await firstBytes(download)).toBe('%PDF-1.7');
   });
 });
+
+/** Names a tariff that several sites share, in place of one of the site's own. */
+async function chooseSharedTariff(page: Page, server: TestServer): Promise<void> {
+  const clauses = [{ name: 'reactive', kind: 'kvarhBeyondRatio', freeRatio: 0.33, pricePerUnit: 0.02 }];
+  const paper = { kind: 'tariff', name: 'Valley supply', date: '2026-01-01', document: { clauses } };
+  expect((await server.ask('POST', '/api/papers', paper)).status).toBe(201);
+  await station(page, 'Money').click();
+  await page.getByLabel('the tariff is').selectOption({ label: 'Valley supply, the latest version' });
+  await page.getByText('“Valley supply”, version 1, holds from').waitFor();
+  await page.getByText('What it says', { exact: true }).click();
+  await page.getByRole('rowheader', { name: 'clauses[0].freeRatio' }).waitFor();
+}
+
+/** Opens the working of a figure and copies its link; the link alone opens the same working on the same moment. */
+async function bringsBackItsWorking(page: Page, heading: RegExp): Promise<void> {
+  const figure = page.getByRole('region', { name: heading });
+  await figure.getByRole('button', { name: 'Working' }).click();
+  const working = page.getByRole('region', { name: /^Working: current of the supply/ });
+  const shown = await working.textContent();
+  await page.evaluate('navigator.clipboard.writeText = async (text) => { window.copied = text; }');
+  await working.getByRole('button', { name: 'Copy link' }).click();
+  await page.goto(await page.evaluate('window.copied'));
+  await page.reload();
+  await working.waitFor();
+  expect(await working.textContent()).toBe(shown);
+}
 
 function station(page: Page, name: string): Locator {
   return page

@@ -88,6 +88,7 @@ summary { cursor: pointer; min-height: 24px; padding: 4px 0; }
 .wide { max-width: none; }
 ol { padding-left: 32px; }
 li { overflow-wrap: anywhere; }
+.wide th[scope=row] { min-width: 96px; }
 .wide td, .wide th { text-align: left; overflow-wrap: anywhere; vertical-align: top; }
 footer { padding-bottom: 32px; }
 details { margin: 12px 0; }

@@ -1,4 +1,5 @@
 import type { Result } from '#libs/engine/index.js';
+import { countWord } from '#libs/present/findings.js';
 import { formatNumber, formatQuantity } from '#libs/present/format-number.js';
 import { setPointWorking } from '#libs/present/headline-workings.js';
 import { formatMonth } from '#libs/present/local-stamp.js';
@@ -98,6 +99,10 @@ export function BankSheet() {
   );
 }
 
+function capitalised(words: string): string {
+  return words.charAt(0).toUpperCase() + words.slice(1);
+}
+
 function setPointFrom({ document, kept }: DeskState): 'typed' | 'searched' | 'target' {
   if (valueAt(document, 'control.setPointPowerFactor') !== undefined) return 'typed';
   return kept?.kind === 'plan' ? 'searched' : 'target';
@@ -105,7 +110,7 @@ function setPointFrom({ document, kept }: DeskState): 'typed' | 'searched' | 'ta
 
 function headline({ bank, operation, requirement }: Result): string {
   const count = bank.stages.length;
-  const stages = `${count === 1 ? 'One stage' : `${formatNumber(count, 'given')} stages`}, ${formatQuantity(bank.effectiveKvar, 'kvar')},`;
+  const stages = `${capitalised(countWord(count))} ${count === 1 ? 'stage' : 'stages'}, ${formatQuantity(bank.effectiveKvar, 'kvar')},`;
   const target = formatNumber(requirement.targetPowerFactor, 'given');
   const known = operation.months.flatMap(({ month, powerFactorLagging }) =>
     powerFactorLagging === null ? [] : [{ month, factor: powerFactorLagging }],

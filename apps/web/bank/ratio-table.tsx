@@ -1,3 +1,4 @@
+import { Fragment } from 'react';
 import type { ReactorTrial } from '#libs/engine/index.js';
 import { formatNumber, formatQuantity } from '#libs/present/format-number.js';
 import { peakWords, trialReason } from '#libs/present/trial-rows.js';
@@ -27,31 +28,40 @@ export function RatioTable() {
             <th scope="col" className="right">
               peaks
             </th>
-            <th scope="col">verdict, nearest its limit</th>
+            <th scope="col">verdict</th>
           </tr>
         </thead>
         <tbody>
           {rows.map((row) => (
-            <tr key={row.reactorPct} className={row.chosen ? 'own' : undefined}>
-              <th scope="row" className="nowrap">
-                <span className="trial">
-                  {row.filter ? 'filter ' : ''}
-                  {ratioWords(row.reactorPct)}, {formatQuantity(row.ratedV, 'V', 'given')}
-                </span>
-                {row.chosen || bank === null ? (
-                  <span className="caption beneath">as it stands</span>
-                ) : (
-                  <button
-                    type="button"
-                    className="way beneath"
-                    onClick={() => desk.tryBank(withRatio(bank, row.reactorPct, row.ratedV))}
-                  >
-                    Put in place<span className="hidden"> {ratioWords(row.reactorPct)}</span>
-                  </button>
-                )}
-              </th>
-              <TrialCells row={row} />
-            </tr>
+            <Fragment key={row.reactorPct}>
+              <tr className={row.chosen ? 'headed own' : 'headed'}>
+                <th scope="row" className="nowrap">
+                  <span className="trial">
+                    {row.filter ? 'filter ' : ''}
+                    {ratioWords(row.reactorPct)}, {formatQuantity(row.ratedV, 'V', 'given')}
+                  </span>
+                </th>
+                <TrialCells row={row} />
+              </tr>
+              <tr>
+                <td colSpan={4}>
+                  <span className="trial-told">
+                    {row.chosen || bank === null ? (
+                      <span className="caption">as it stands</span>
+                    ) : (
+                      <button
+                        type="button"
+                        className="way"
+                        onClick={() => desk.tryBank(withRatio(bank, row.reactorPct, row.ratedV))}
+                      >
+                        Put in place<span className="hidden"> {ratioWords(row.reactorPct)}</span>
+                      </button>
+                    )}
+                    <span className="caption">{trialWords(row)}</span>
+                  </span>
+                </td>
+              </tr>
+            </Fragment>
           ))}
         </tbody>
       </ScrollTable>
@@ -71,22 +81,24 @@ function isMixed(bank: ReturnType<typeof bankOf>): boolean {
 }
 
 function TrialCells({ row }: { row: ReactorTrial }) {
-  const { tunedOrderH, verdict, worstDuty, worstRatio } = row;
+  const { tunedOrderH, verdict } = row;
   return (
     <>
       <td className="right">{tunedOrderH === null ? '–' : formatNumber(tunedOrderH)}</td>
       <td className="right nowrap">{peakWords(row)}</td>
       <td>
         <VerdictWords verdict={verdict} />
-        {worstDuty === null || worstRatio === null ? null : (
-          <span className="caption beneath">
-            {worstDuty}, {formatQuantity(100 * worstRatio, '%', 'whole')}
-          </span>
-        )}
-        {row.chosen ? null : <span className="caption beneath">{trialReason(row)}</span>}
       </td>
     </>
   );
+}
+
+/** The duty nearest to its limit, and why the row is not the bank's, each number once. */
+function trialWords(row: ReactorTrial): string {
+  const reason = row.chosen ? '' : trialReason(row);
+  if (row.worstDuty === null || row.worstRatio === null || reason.includes(row.worstDuty)) return reason;
+  const nearest = `nearest its limit: ${row.worstDuty}, ${formatQuantity(100 * row.worstRatio, '%', 'whole')}`;
+  return reason === '' ? nearest : `${reason}; ${nearest}`;
 }
 
 function ratioWords(pct: number): string {

@@ -16,7 +16,8 @@ import type {
   SiteShown,
 } from '../api/shown.js';
 import { valueAt } from '../field/document-path.js';
-import type { Look, Picks, StationCharts } from './look.js';
+import { type HeldPapers, withHeldPapers } from './held-papers.js';
+import type { Look, LookAsked, Picks, StationCharts } from './look.js';
 
 /** Everything the page of one site shows. */
 export interface DeskState {
@@ -26,6 +27,8 @@ export interface DeskState {
   document: SiteDocument | null;
   /** the bank under the hand; null: the kept plan's, or the site's own */
   trial: BankInput | null;
+  /** shared papers the document names */
+  held: HeldPapers;
   records: RecordShown[];
   revisions: RevisionHeadShown[];
   kept: RevisionShown | null;
@@ -56,6 +59,7 @@ export const NOTHING_YET: DeskState = {
   site: null,
   document: null,
   trial: null,
+  held: {},
   records: [],
   revisions: [],
   kept: null,
@@ -98,12 +102,19 @@ export function bankOf({ trial, kept, document }: DeskState): BankInput | null {
 export function studiedDocument(state: DeskState): SiteDocument | null {
   const { document, kept } = state;
   if (document === null) return null;
-  const { bank: _, ...rest } = document;
+  const { bank: _, ...rest } = withHeldPapers(document, state.held);
   const bank = bankOf(state);
   const studied: SiteDocument = bank === null || bank.stages.length === 0 ? rest : { ...rest, bank };
   const setPoint = kept?.kind === 'plan' ? kept.result.control.setPointPowerFactor : undefined;
   if (setPoint === undefined || valueAt(document, 'control.setPointPowerFactor') !== undefined) return studied;
   return { ...studied, control: { ...(document.control as object), setPointPowerFactor: setPoint } };
+}
+
+/** What the engine is asked for the open station. */
+export function lookAsked(state: DeskState, station: Station): LookAsked {
+  const { kept, trial, picks } = state;
+  const kind = kept !== null && trial === null ? kept.kind : 'assess';
+  return { document: studiedDocument(state)!, kind, station, picks, depth: 'full' };
 }
 
 /** Whether anything was typed or moved that is not kept. */
@@ -126,7 +137,8 @@ const STATION_KEYS: [Station, readonly string[]][] = [
  * @param state what is typed and what was kept
  */
 export function staleFrom(state: DeskState): Station | null {
-  const { kept, document, records, trial } = state;
+  const { kept, records, trial } = state;
+  const document = state.document === null ? null : withHeldPapers(state.document, state.held);
   if (kept === null || document === null) return null;
   if (records[0] !== undefined && records[0].id !== kept.recordId) return 'record';
   const frozen = kept.inputs.site;

@@ -1,28 +1,28 @@
-import type { BankInput, Problem } from '#libs/engine/index.js';
+import type { BankInput } from '#libs/engine/index.js';
 import type { Station } from '../address.js';
 import { ask, NoConnection, Refused } from '../api/ask.js';
-import type { RecordShown, ReviewShown, RevisionHeadShown, RevisionShown, SiteShown } from '../api/shown.js';
+import type { RevisionShown, SiteShown } from '../api/shown.js';
 import { withValueAt } from '../field/document-path.js';
 import { paperAsked } from '../proposal/paper-language.js';
 import { clockNow } from './clock-now.js';
 import { InputRefused } from './desk-link.js';
-import { type DeskState, isChanged, NOTHING_YET, staleFrom, studiedDocument } from './desk-state.js';
+import { type DeskState, isChanged, lookAsked, NOTHING_YET, staleFrom, studiedDocument } from './desk-state.js';
 import { dropDraft, keepDraft, readDraft } from './draft.js';
 import { EngineDesk } from './engine-desk.js';
+import { fetchKept } from './fetch-kept.js';
 import { followJob, type JobEnd, keptJob } from './follow-job.js';
+import { fetchHeldPapers } from './held-papers.js';
 import type { Firmness, Look, LookAsked, Picks, Trace } from './look.js';
 import { mergedLook } from './merged-look.js';
 import { RetryLater } from './retry-later.js';
 
-/** Wait for a first plan that is being made elsewhere [ms]. */
+/** Waits: for a first plan that is being made elsewhere, and before a lost connection is tried again [ms]. */
 const FIRST_PLAN_MS = 1500;
-
-/** Wait before a lost connection is tried again [ms]. */
 const MEND_MS = 4000;
-
 /** Everything one site's page does: holds what is typed, asks the engine and the server, and says what came of it. */
 export class SiteDesk {
   readonly siteId: string;
+  readonly #path: string;
   #state: DeskState = NOTHING_YET;
   #station: Station = 'bank';
   #engine: EngineDesk | null = null;
@@ -36,6 +36,7 @@ export class SiteDesk {
 
   constructor(siteId: string) {
     this.siteId = siteId;
+    this.#path = `/api/sites/${siteId}`;
   }
 
   readonly subscribe = (changed: () => void): (() => void) => {
@@ -48,7 +49,7 @@ export class SiteDesk {
   /** Loads the site, its records and its latest revision. */
   async open(): Promise<void> {
     try {
-      const site = (await ask<SiteShown>(this.#path())).body;
+      const site = (await ask<SiteShown>(this.#path)).body;
       const draft = readDraft(this.siteId);
       const isOlder = draft !== null && draft.version !== site.version;
       this.#set({
@@ -58,7 +59,7 @@ export class SiteDesk {
         theirs: isOlder ? site : null,
       });
       await this.#refresh();
-      this.#set({ stage: 'open' });
+      this.#set({ stage: 'open', held: await fetchHeldPapers(this.#state.document) });
       this.#prepareEngine();
       const jobId = keptJob(this.siteId);
       if (jobId !== null) this.#follow(jobId);
@@ -90,6 +91,7 @@ export class SiteDesk {
     const document = withValueAt(this.#state.document!, path, read.value);
     this.#set({ typed: others, document, problems: this.#state.problems.filter((problem) => problem.path !== path) });
     this.#edited();
+    if (path.startsWith('papers.')) this.#hold();
   }
 
   /** The bank under the hand; null puts the kept one back. */
@@ -107,7 +109,7 @@ export class SiteDesk {
   putBack(): void {
     dropDraft(this.siteId);
     this.#set({ document: this.#state.site!.site, trial: null, typed: {}, problems: [] });
-    this.#look(true);
+    this.#hold();
   }
 
   /**
@@ -118,7 +120,7 @@ export class SiteDesk {
     this.#set({ saving: true, problems: [], fault: null });
     try {
       if (isChanged(this.#state)) await this.#save(kind);
-      const path = `${this.#path()}/${kind === 'plan' ? 'plans' : 'assessments'}`;
+      const path = `${this.#path}/${kind === 'plan' ? 'plans' : 'assessments'}`;
       const { body } = await ask<RevisionShown | { id: string }>(path, { method: 'POST', json: paperAsked() });
       this.#set({ offlineSince: null });
       if ('contentHash' in body) await this.#kept();
@@ -147,14 +149,11 @@ export class SiteDesk {
     const own = whose === 'mine' ? document : theirs.site;
     this.#set({ site: theirs, document: own, theirs: null, ...(whose === 'theirs' ? { trial: null, typed: {} } : {}) });
     this.#edited();
+    this.#hold();
   }
 
   trace(): Promise<Trace> | null {
     return this.#engine?.trace() ?? null;
-  }
-
-  #path(): string {
-    return `/api/sites/${this.siteId}`;
   }
 
   async #save(kind: 'plan' | 'assess'): Promise<void> {
@@ -162,7 +161,7 @@ export class SiteDesk {
     const studied = studiedDocument(this.#state);
     // A bank under the hand becomes the site's own; a plan's bank stays the plan's.
     const own = trial === null || kind === 'plan' ? document : { ...document, bank: studied?.bank ?? trial };
-    const { body } = await ask<SiteShown>(this.#path(), {
+    const { body } = await ask<SiteShown>(this.#path, {
       method: 'PUT',
       json: own,
       headers: { 'if-match': `"${site!.version}"` },
@@ -172,13 +171,10 @@ export class SiteDesk {
   }
 
   async #refresh(): Promise<void> {
-    const records = (await ask<{ records: RecordShown[] }>(`${this.#path()}/records`)).body.records;
-    const { revisions } = (await ask<{ revisions: RevisionHeadShown[] }>(`${this.#path()}/revisions`)).body;
-    const latest = revisions[0];
-    const kept = latest === undefined ? null : (await ask<RevisionShown>(latest.links.self)).body;
-    const review = latest === undefined ? null : (await ask<ReviewShown>(`${latest.links.self}/review`)).body;
-    this.#set({ records, revisions, kept, review, offlineSince: null });
-    if (kept === null && records.length > 0 && !this.#closed) setTimeout(() => this.#lookAgain(), FIRST_PLAN_MS);
+    const kept = await fetchKept(this.#path);
+    this.#set({ ...kept, offlineSince: null });
+    if (kept.kept === null && kept.records.length > 0 && !this.#closed)
+      setTimeout(() => this.#lookAgain(), FIRST_PLAN_MS);
   }
 
   #lookAgain(): void {
@@ -211,6 +207,16 @@ export class SiteDesk {
     if (end.state === 'done') await this.#kept().catch((error) => this.#hear(error));
   }
 
+  #hold(): void {
+    fetchHeldPapers(this.#state.document).then(
+      (held) => {
+        this.#set({ held });
+        this.#look(true);
+      },
+      (error) => this.#hear(error),
+    );
+  }
+
   #edited(): void {
     const { site, document, trial } = this.#state;
     keepDraft(this.siteId, { version: site!.version, document: document!, trial });
@@ -223,7 +229,7 @@ export class SiteDesk {
     this.#engine?.close();
     this.#engineRecord = record.id;
     const opened = {
-      columnsUrl: `${this.#path()}/records/${record.id}/columns`,
+      columnsUrl: `${this.#path}/records/${record.id}/columns`,
       summary: record.record,
       timeZone: this.#state.site!.site.timeZone,
     };
@@ -235,14 +241,8 @@ export class SiteDesk {
     this.#look(true);
   }
 
-  #asked(): LookAsked {
-    const { kept, trial, picks } = this.#state;
-    const kind = kept !== null && trial === null ? kept.kind : 'assess';
-    return { document: studiedDocument(this.#state)!, kind, station: this.#station, picks, depth: 'full' };
-  }
-
   #look(isFullOnly: boolean): void {
-    if (this.#engine !== null) this.#engine.look(this.#asked(), isFullOnly);
+    if (this.#engine !== null) this.#engine.look(lookAsked(this.#state, this.#station), isFullOnly);
   }
 
   #looked(look: Look, asked: LookAsked, tookMs: number): void {
@@ -272,7 +272,7 @@ export class SiteDesk {
 
   async #hearSaving(error: unknown): Promise<void> {
     if (error instanceof Refused && error.problem.status === 412) {
-      const theirs = await ask<SiteShown>(this.#path()).catch(() => null);
+      const theirs = await ask<SiteShown>(this.#path).catch(() => null);
       if (theirs !== null) this.#set({ theirs: theirs.body });
       return;
     }
@@ -286,8 +286,8 @@ export class SiteDesk {
       return;
     }
     if (!(error instanceof Refused)) throw error;
-    const problems: readonly Problem[] = error.problem.problems;
-    this.#set({ problems, fault: problems.length === 0 ? error.problem.detail : null });
+    const { problems, detail } = error.problem;
+    this.#set({ problems, fault: problems.length === 0 ? detail : null });
   }
 
   #set(part: Partial<DeskState>): void {

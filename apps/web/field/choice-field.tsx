@@ -21,6 +21,7 @@ export function ChoiceField<T extends string | number>({
     <FieldFrame path={path} label={label} refusal={refusalOf(state.problems, path)}>
       <select
         id={`field:${path}`}
+        className={value === undefined ? 'unset' : undefined}
         value={value === undefined ? '' : String(value)}
         onChange={({ target }) => {
           const chosen = choices.find(([one]) => String(one) === target.value)?.[0];

@@ -3,7 +3,7 @@ import type { EstimateResult, Remark, Result } from '#libs/engine/index.js';
 import { MONEY_FIGURES } from '#libs/present/effect-words.js';
 import { formatNumber, formatQuantity, formatRange, inShownMark } from '#libs/present/format-number.js';
 import { messageOf, remarkConsequence } from '#libs/present/remark-words.js';
-import { siteAddress, stationOfPath } from '../address.js';
+import { siteAddress, type Station, stationOfCode, stationOfPath } from '../address.js';
 import { useDesk } from '../desk/use-desk.js';
 import { keptEstimate } from './kept-estimate.js';
 import { latestResult } from './latest-result.js';
@@ -14,6 +14,8 @@ interface Point {
   text: string;
   why: string;
   path: string | null;
+  /** where it is looked at, without a field of its own */
+  station: Station;
   /** how far it moves the figure it moves most, where that was computed */
   spread: number | null;
   effect: string;
@@ -88,7 +90,7 @@ function QuietPoints({ points, siteId }: { points: readonly Point[]; siteId: str
 }
 
 function PointRow({ point, most, siteId }: { point: Point; most: number; siteId: string }) {
-  const { text, why, path, spread, effect } = point;
+  const { text, why, path, station, spread, effect } = point;
   const share = spread === null || most === 0 ? 0 : Math.max(0.04, spread / most);
   return (
     <li className="point">
@@ -100,7 +102,13 @@ function PointRow({ point, most, siteId }: { point: Point; most: number; siteId:
         )}
       </div>
       <div>
-        {path === null ? text : <a href={siteAddress(siteId, stationOfPath(path), { field: path })}>{text}</a>}
+        <a
+          href={
+            path === null ? siteAddress(siteId, station) : siteAddress(siteId, stationOfPath(path), { field: path })
+          }
+        >
+          {text}
+        </a>
         <p>{why}</p>
         {effect === '' ? null : <p>{effect}</p>}
       </div>
@@ -130,6 +138,7 @@ export function openPoints({ reasons, record, assumptions, duties }: Result | Es
             text: `${open} ${open === 1 ? 'duty is' : 'duties are'} not judged`,
             why: 'A limit or a load is missing.',
             path: 'loads.distorting',
+            station: 'supply',
             spread: null,
             effect: '',
             isAssumed: false,
@@ -139,7 +148,7 @@ export function openPoints({ reasons, record, assumptions, duties }: Result | Es
   const points = [
     ...unsettled.map((remark) => pointOf(remark, false)),
     ...unjudged,
-    ...(record?.notes ?? []).map((remark) => pointOf(remark, false)),
+    ...(record?.notes ?? []).map((remark) => ({ ...pointOf(remark, false), station: 'record' as const })),
     ...assumptions.map((remark) => pointOf(remark, true)),
   ];
   return points
@@ -154,6 +163,7 @@ function pointOf(remark: Remark, isAssumed: boolean): Point {
     text: inShownMark(text.replace(/\.$/, '')),
     why: remarkConsequence(remark),
     path,
+    station: stationOfCode(code),
     spread: effect === null ? null : spreadOf(effect),
     effect: effect === null ? '' : effect.changesVerdict ? DECIDES : rangeWords(effect),
     isAssumed,

@@ -122,7 +122,8 @@ const FIGURES: Record<Station, (state: DeskState) => { figure: ReactNode; third:
     if (money === null)
       return {
         figure: 'not priced',
-        third: state.document?.tariff === undefined ? 'no tariff entered' : 'no bank yet',
+        third:
+          state.document?.tariff === undefined && state.held.tariff === undefined ? 'no tariff entered' : 'no bank yet',
       };
     const currency = String(state.document?.currency ?? '');
     return {

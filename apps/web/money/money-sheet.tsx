@@ -12,6 +12,7 @@ import {
   tariffWords,
 } from '#libs/present/money-words.js';
 import { headlineSaving } from '#libs/present/saving-words.js';
+import { withHeldPapers } from '../desk/held-papers.js';
 import { useDesk } from '../desk/use-desk.js';
 import { Plot } from '../draw/plot.js';
 import { ScrollTable } from '../draw/scroll-table.js';
@@ -28,7 +29,12 @@ export function MoneySheet() {
   const { state } = useDesk();
   const money = latestResult(state)?.money ?? null;
   // The papers as typed; a key that is no value yet is refused at its field, and the figures stay the last ones.
-  const papers = moneyPapers((state.document ?? {}) as Pick<Site, 'tariff' | 'prices' | 'finance' | 'catalogue'>);
+  const papers = moneyPapers(
+    (state.document === null ? {} : withHeldPapers(state.document, state.held)) as Pick<
+      Site,
+      'tariff' | 'prices' | 'finance' | 'catalogue'
+    >,
+  );
   const currency = papers.currency === '' ? 'amount' : papers.currency;
   return (
     <>

@@ -4,6 +4,7 @@ import { valueAt } from '../field/document-path.js';
 import { QuantityField } from '../field/quantity-field.js';
 import { TextField } from '../field/text-field.js';
 import { RowFields } from './row-fields.js';
+import { SharedPaper } from './shared-paper.js';
 
 /** What a bank costs to build and to run, and how money over the years is reckoned. */
 export function PriceFields({ currency }: { currency: string }) {
@@ -13,40 +14,9 @@ export function PriceFields({ currency }: { currency: string }) {
     <>
       <section className="section" aria-labelledby="prices">
         <h2 id="prices">{isInvented ? 'The price book, invented' : 'The price book'}</h2>
-        <p className="caption">
-          {`In ${currency}; kvar are rated kvar. What is left empty costs nothing.`}
-          {isInvented ? ' These prices are made up: put real ones in before anything is decided.' : ''}
-        </p>
-        <div className="fields">
-          <TextField path="prices.name" label="name of the price book" isWide />
-          <TextField path="prices.validFrom" label="valid from, 2026-01-31" />
-          <TextField path="prices.validTo" label="until" />
-          <Invented />
-          <QuantityField path="prices.perKvar" label="capacitors, per kvar" />
-          <QuantityField path="prices.perStage" label="each stage" />
-          <QuantityField path="prices.installationFixed" label="installation" />
-          <QuantityField path="prices.installationPerKvar" label="installation, per kvar" />
-          <QuantityField path="prices.fixed" label="controller, engineering" />
-          <QuantityField path="prices.contingencyPct" label="contingency" unit="%" />
-          <QuantityField path="prices.maintenancePerYear" label="maintenance a year" />
-          <QuantityField path="prices.maintenancePerStage" label="of each stage a year" />
-          <QuantityField path="prices.lossWPerKvar.plain" label="loss, plain stage" unit="W/kvar" />
-          <QuantityField path="prices.lossWPerKvar.reactor" label="loss, with reactor" unit="W/kvar" />
-          <QuantityField path="prices.lossPricePerKwh" label="losses, per kWh" />
-          <QuantityField path="prices.capacitorLifeYears" label="capacitors last" unit="years" otherwise="for ever" />
-          <QuantityField path="prices.replacementFactor" label="replacing, over new" otherwise="1, taken" />
-        </div>
-        <RowFields
-          path="prices.reactors"
-          row="reactor price"
-          starter={{ reactorPct: 7, perKvar: 0 }}
-          columns={[
-            { key: 'reactorPct', label: 'reactors of', unit: '%' },
-            { key: 'perKvar', label: 'per kvar' },
-          ]}
-        />
-        <Switches />
-        <Cabinets />
+        <SharedPaper kind="prices">
+          <OwnPrices currency={currency} isInvented={isInvented} />
+        </SharedPaper>
       </section>
       <section className="section" aria-labelledby="finance">
         <h2 id="finance">Money over the years</h2>
@@ -57,6 +27,47 @@ export function PriceFields({ currency }: { currency: string }) {
           <QuantityField path="finance.costGrowthPct" label="costs grow a year by" unit="%" otherwise="0, taken" />
         </div>
       </section>
+    </>
+  );
+}
+
+function OwnPrices({ currency, isInvented }: { currency: string; isInvented: boolean }) {
+  return (
+    <>
+      <p className="caption">
+        {`In ${currency}; kvar are rated kvar. What is left empty costs nothing.`}
+        {isInvented ? ' These prices are made up: put real ones in before anything is decided.' : ''}
+      </p>
+      <div className="fields">
+        <TextField path="prices.name" label="name of the price book" isWide />
+        <TextField path="prices.validFrom" label="valid from, 2026-01-31" />
+        <TextField path="prices.validTo" label="until" />
+        <Invented />
+        <QuantityField path="prices.perKvar" label="capacitors, per kvar" />
+        <QuantityField path="prices.perStage" label="each stage" />
+        <QuantityField path="prices.installationFixed" label="installation" />
+        <QuantityField path="prices.installationPerKvar" label="installation, per kvar" />
+        <QuantityField path="prices.fixed" label="controller, engineering" />
+        <QuantityField path="prices.contingencyPct" label="contingency" unit="%" />
+        <QuantityField path="prices.maintenancePerYear" label="maintenance a year" />
+        <QuantityField path="prices.maintenancePerStage" label="of each stage a year" />
+        <QuantityField path="prices.lossWPerKvar.plain" label="loss, plain stage" unit="W/kvar" />
+        <QuantityField path="prices.lossWPerKvar.reactor" label="loss, with reactor" unit="W/kvar" />
+        <QuantityField path="prices.lossPricePerKwh" label="losses, per kWh" />
+        <QuantityField path="prices.capacitorLifeYears" label="capacitors last" unit="years" otherwise="for ever" />
+        <QuantityField path="prices.replacementFactor" label="replacing, over new" otherwise="1, taken" />
+      </div>
+      <RowFields
+        path="prices.reactors"
+        row="reactor price"
+        starter={{ reactorPct: 7, perKvar: 0 }}
+        columns={[
+          { key: 'reactorPct', label: 'reactors of', unit: '%' },
+          { key: 'perKvar', label: 'per kvar' },
+        ]}
+      />
+      <Switches />
+      <Cabinets />
     </>
   );
 }

@@ -1,4 +1,5 @@
 import type { Clause, TariffWindow } from '#libs/engine/index.js';
+import { paperNamed } from '../desk/held-papers.js';
 import { useDesk } from '../desk/use-desk.js';
 import { ChoiceField } from '../field/choice-field.js';
 import { valueAt } from '../field/document-path.js';
@@ -8,6 +9,7 @@ import { TextField } from '../field/text-field.js';
 import { ClauseSentence } from './clause-sentence.js';
 import { ClauseTerms } from './clause-terms.js';
 import { DayListField } from './day-list-field.js';
+import { SharedPaper } from './shared-paper.js';
 import { TariffWindows } from './tariff-windows.js';
 
 const KINDS: Record<Clause['kind'], string> = {
@@ -47,31 +49,61 @@ function starter(kind: Clause['kind'], name: string): Clause {
   }
 }
 
-/** The tariff: what holds for the whole bill, windows of time, and each clause as a sentence. */
+/** The tariff: the site's own, what holds for the whole bill and each clause as a sentence, or a shared one. */
 export function TariffFields({ currency }: { currency: string }) {
+  const { state } = useDesk();
+  const isShared = paperNamed(state.document, 'tariff') !== undefined;
+  return (
+    <section className="section" aria-labelledby="tariff">
+      <div className="plot-head">
+        <h2 id="tariff">{isShared ? 'The tariff, shared' : 'The tariff, clause by clause'}</h2>
+        {isShared ? null : (
+          <span className="ways">
+            <AddClause />
+          </span>
+        )}
+      </div>
+      <p className="caption">Each clause is one line of the bill, in this order. Fill in what the contract says.</p>
+      <div className="fields">
+        <TextField path="currency" label="currency, as EUR" />
+      </div>
+      <SharedPaper kind="tariff">
+        <OwnTariff currency={currency} />
+      </SharedPaper>
+    </section>
+  );
+}
+
+const CLAUSES = 'tariff.clauses';
+
+function useClauses() {
   const { desk, state } = useDesk();
-  const path = 'tariff.clauses';
-  const clauses = (valueAt(state.document, path) as Clause[] | undefined) ?? [];
-  const put = (next: Clause[]) => desk.type(path, '', { value: next.length === 0 ? undefined : next });
+  const clauses = (valueAt(state.document, CLAUSES) as Clause[] | undefined) ?? [];
+  const put = (next: Clause[]) => desk.type(CLAUSES, '', { value: next.length === 0 ? undefined : next });
+  return { clauses, put };
+}
+
+function AddClause() {
+  const { clauses, put } = useClauses();
   const names = new Set(clauses.map(({ name }) => name));
   let number = clauses.length + 1;
   while (names.has(`clause ${number}`)) number++;
   return (
-    <section className="section" aria-labelledby="tariff">
-      <div className="plot-head">
-        <h2 id="tariff">The tariff, clause by clause</h2>
-        <span className="ways">
-          <button
-            type="button"
-            className="way"
-            id={`field:${path}`}
-            onClick={() => put([...clauses, starter('energy', `clause ${number}`)])}
-          >
-            Add a clause
-          </button>
-        </span>
-      </div>
-      <p className="caption">Each clause is one line of the bill, in this order. Fill in what the contract says.</p>
+    <button
+      type="button"
+      className="way"
+      id={`field:${CLAUSES}`}
+      onClick={() => put([...clauses, starter('energy', `clause ${number}`)])}
+    >
+      Add a clause
+    </button>
+  );
+}
+
+function OwnTariff({ currency }: { currency: string }) {
+  const { clauses } = useClauses();
+  return (
+    <>
       <div className="fields">
         <TextField path="tariff.name" label="name of the tariff" isWide />
         <QuantityField path="tariff.taxPct" label="tax" unit="%" otherwise="none" />
@@ -85,34 +117,43 @@ export function TariffFields({ currency }: { currency: string }) {
         <DayListField path="tariff.holidays" label="days, as 2025-12-25" />
       </div>
       {clauses.map((clause, at) => (
-        <fieldset key={at} className="clause" aria-label={`Clause ${clause.name}`}>
-          <div className="fields">
-            <TextField path={`${path}[${at}].name`} label={`clause ${at + 1}`} />
-            <FieldFrame path={`${path}[${at}].kind`} label="kind" refusal={refusalOf(state.problems, `${path}[${at}]`)}>
-              <select
-                id={`field:${path}[${at}].kind`}
-                value={clause.kind}
-                onChange={({ target }) => put(clauses.with(at, starter(target.value as Clause['kind'], clause.name)))}
-              >
-                {Object.entries(KINDS).map(([kind, words]) => (
-                  <option key={kind} value={kind}>
-                    {words}
-                  </option>
-                ))}
-              </select>
-            </FieldFrame>
-            <p className="row">
-              <button type="button" className="way" onClick={() => put(clauses.toSpliced(at, 1))}>
-                Remove<span className="hidden"> {clause.name}</span>
-              </button>
-            </p>
-          </div>
-          <ClauseSentence path={`${path}[${at}]`} currency={currency} />
-          <ClauseWindows path={`${path}[${at}]`} clause={clause} />
-          <ClauseTerms path={`${path}[${at}]`} clause={clause} />
-        </fieldset>
+        <ClauseFields key={at} at={at} clause={clause} currency={currency} />
       ))}
-    </section>
+    </>
+  );
+}
+
+function ClauseFields({ at, clause, currency }: { at: number; clause: Clause; currency: string }) {
+  const { state } = useDesk();
+  const { clauses, put } = useClauses();
+  const path = `${CLAUSES}[${at}]`;
+  return (
+    <fieldset className="clause" aria-label={`Clause ${clause.name}`}>
+      <div className="fields">
+        <TextField path={`${path}.name`} label={`clause ${at + 1}`} />
+        <FieldFrame path={`${path}.kind`} label="kind" refusal={refusalOf(state.problems, path)}>
+          <select
+            id={`field:${path}.kind`}
+            value={clause.kind}
+            onChange={({ target }) => put(clauses.with(at, starter(target.value as Clause['kind'], clause.name)))}
+          >
+            {Object.entries(KINDS).map(([kind, words]) => (
+              <option key={kind} value={kind}>
+                {words}
+              </option>
+            ))}
+          </select>
+        </FieldFrame>
+        <p className="row">
+          <button type="button" className="way" onClick={() => put(clauses.toSpliced(at, 1))}>
+            Remove<span className="hidden"> {clause.name}</span>
+          </button>
+        </p>
+      </div>
+      <ClauseSentence path={path} currency={currency} />
+      <ClauseWindows path={path} clause={clause} />
+      <ClauseTerms path={path} clause={clause} />
+    </fieldset>
   );
 }
 

@@ -1,4 +1,4 @@
-import { useCallback, useEffect, useState } from 'react';
+import { useEffect, useState } from 'react';
 import { formatNumber } from '#libs/present/format-number.js';
 import { ask, NoConnection } from '../api/ask.js';
 import type { PaperShown } from '../api/shown.js';
@@ -6,6 +6,7 @@ import { RowTable } from '../draw/row-table.js';
 import { Head } from '../line/head.js';
 import { NewPaper } from './new-paper.js';
 import { paperRows } from './paper-rows.js';
+import { usePapers } from './use-papers.js';
 
 const KINDS: Record<PaperShown['kind'], string> = { tariff: 'tariff', prices: 'price book' };
 
@@ -24,8 +25,8 @@ export function PapersPage() {
           <h1>{headline(papers)}</h1>
         </div>
         <p className="caption">
-          A site file names one under “papers” in place of its own tariff or prices. A version never changes; a later
-          one follows it, and a revision keeps the version it was made with.
+          A site names one at its money, or its file under “papers”, in place of its own tariff or prices. A version
+          never changes; a later one follows it, and a revision keeps the version it was made with.
         </p>
         {papers === null ? null : (
           <ul>
@@ -45,21 +46,6 @@ function headline(papers: readonly PaperShown[] | null): string {
   const names = new Set(papers.map(({ kind, name }) => `${kind} ${name}`)).size;
   if (names === 0) return 'No shared paper yet. Add the first below.';
   return names === 1 ? 'One shared paper' : `${formatNumber(names, 'given')} shared papers`;
-}
-
-function usePapers() {
-  const [papers, setPapers] = useState<PaperShown[] | null>(null);
-  const [failure, setFailure] = useState('');
-  const reload = useCallback(async () => {
-    try {
-      setPapers((await ask<{ papers: PaperShown[] }>('/api/papers')).body.papers);
-      setFailure('');
-    } catch (error) {
-      setFailure(error instanceof NoConnection ? 'No connection' : (error as Error).message);
-    }
-  }, []);
-  useEffect(() => void reload(), [reload]);
-  return { papers, failure, reload };
 }
 
 /** One version; what it says is fetched when it is opened. */

@@ -1,3 +1,4 @@
+import { Fragment } from 'react';
 import type { Reevaluation, ResultChange, Verdict } from '#libs/engine/index.js';
 import { factorSince } from '#libs/present/factor-since.js';
 import { formatQuantity, inShownMark } from '#libs/present/format-number.js';
@@ -102,7 +103,13 @@ function Changes({ reevaluation, currency }: { reevaluation: Reevaluation; curre
         heads={CHANGE_HEADS}
         right={[1, 2, 3]}
         rows={rows.map((cells, at) => [
-          ...cells.slice(0, 4),
+          <Fragment key="figure">
+            {cells[0]}
+            <span className="narrow">
+              <Judgement change={changes[at]!} words={cells[4]!} />
+            </span>
+          </Fragment>,
+          ...cells.slice(1, 4),
           <Judgement key={at} change={changes[at]!} words={cells[4]!} />,
         ])}
       />

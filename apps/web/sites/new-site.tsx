@@ -75,9 +75,10 @@ export function NewSite() {
           <button type="button" className="way" onClick={() => void example()}>
             Add the example
           </button>
-          <label className="way">
-            Add from a site file{' '}
+          <label className="way picked-file">
+            Add from a site file
             <input
+              className="hidden"
               type="file"
               accept=".json,application/json"
               onChange={({ target }) => void importFile(target.files?.[0])}

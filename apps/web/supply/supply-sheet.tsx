@@ -45,18 +45,7 @@ export function SupplySheet() {
         {headline(state.document, transformers.length)}
       </Headline>
       <div className="split diagram">
-        {diagram === undefined ? (
-          <section className="section">
-            <h2>Single-line diagram</h2>
-            <p className="caption">
-              {state.records.length === 0
-                ? 'Drawn once a meter record is read.'
-                : 'Drawn once the inputs are readable.'}
-            </p>
-          </section>
-        ) : (
-          <DiagramFigure diagram={diagram} />
-        )}
+        {diagram === undefined ? <NotDrawn /> : <DiagramFigure diagram={diagram} />}
         <section className="section" aria-labelledby="supply-fields">
           <h2 id="supply-fields">Supply</h2>
           <div className="fields">
@@ -116,6 +105,23 @@ export function SupplySheet() {
         </div>
       </section>
     </>
+  );
+}
+
+function NotDrawn() {
+  const { state } = useDesk();
+  const isRefused = state.problems.length > 0 || Object.keys(state.typed).length > 0;
+  return (
+    <section className="section">
+      <h2>Single-line diagram</h2>
+      <p className="caption">
+        {state.records.length === 0
+          ? 'Drawn once a meter record is read.'
+          : isRefused
+            ? 'Drawn once the inputs are readable.'
+            : 'Being drawn.'}
+      </p>
+    </section>
   );
 }
 

@@ -176,7 +176,7 @@ export function hoursFigures({ result }: Outcome): Figure[] {
  * @param outcome the plan or judgement
  * @param practicePerYear switchings a stage and year
  * @returns a figure
- * @source derived
+ * @source method-figures
  */
 export function practiceFigure({ result }: Outcome, practicePerYear: number): Figure {
   const { beginS, endS } = result.record;

@@ -19,7 +19,7 @@ export function quantityNotes(
 ): Remark[] {
   const { columns } = meaning.choice;
   const named = namesIn(file);
-  const read = inOrder(columns).map(({ quantity, column }) => `${quantity} ${named([column])}`);
+  const read = inOrder(columns).map(({ quantity, column }) => `${quantity} from ${named([column])}`);
   return [
     note('file-read-as', { format: 'csv', columns: read.join('; ') }),
     ...unitNotes(columns, named),
