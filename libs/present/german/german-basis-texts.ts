@@ -159,8 +159,6 @@ export const GERMAN_BASIS_TEXTS: Readonly<Record<string, string>> = {
   tolerances: 'Toleranzen',
   'capacitance 0.95 to 1.10 and inductance 0.97 to 1.03 of the nameplate, all stages alike':
     'Kapazität 0,95 bis 1,10 und Induktivität 0,97 bis 1,03 des Leistungsschilds, alle Stufen gleich',
-  '; the network’s own capacitors as their nameplates say and at the same ends, all of them alike, whatever the bank’s':
-    '; die Kondensatoren des Netzes selbst nach ihrem Leistungsschild und an denselben Enden, alle gleich, unabhängig von denen der Anlage',
   corners: 'Eckfälle',
   '{0}, nominal included, at every one of {1} levels': '{0}, Nennfall eingeschlossen, in jedem von {1} Schaltzuständen',
   orders: 'Ordnungen',

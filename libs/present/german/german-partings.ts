@@ -3,6 +3,7 @@
  * counts, so longer ones stand before shorter.
  */
 export const GERMAN_PARTINGS: readonly string[] = [
+  'kurz|zeit|strom|festigkeit',
   'blind|leistungs|kompensation',
   'wieder|einschalt|sperr|zeit',
   'ober|schwingungs|erzeuger',
