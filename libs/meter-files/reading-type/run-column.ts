@@ -14,6 +14,11 @@ export class RunColumn {
   // the run looked at last
   #seen = 0;
 
+  /** stretches kept; one takes 20 bytes, however many numbers it holds */
+  get runs(): number {
+    return this.#runs;
+  }
+
   /** Adds a number behind those there are. */
   add(value: number): void {
     const run = this.#runs - 1;

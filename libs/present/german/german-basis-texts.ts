@@ -157,6 +157,8 @@ export const GERMAN_BASIS_TEXTS: Readonly<Record<string, string>> = {
   '{0} nominal, at most {1}': '{0} Nennwert, höchstens {1}',
   'damping load': 'dämpfende Last',
   tolerances: 'Toleranzen',
+  '; the network’s own capacitors as their nameplates say and at the same ends, all of them alike, whatever the bank’s':
+    '; Kondensatoren des Netzes nach Leistungsschild und an denselben Enden, alle gleich, unabhängig von der Anlage',
   'capacitance 0.95 to 1.10 and inductance 0.97 to 1.03 of the nameplate, all stages alike':
     'Kapazität 0,95 bis 1,10 und Induktivität 0,97 bis 1,03 des Leistungsschilds, alle Stufen gleich',
   corners: 'Eckfälle',
