@@ -10,3 +10,12 @@ export function useDesk(): { desk: SiteDesk; state: DeskState } {
   if (desk === null) throw new Error('no site is open');
   return { desk, state: useSyncExternalStore(desk.subscribe, desk.state) };
 }
+
+const never = () => () => undefined;
+const nothing = () => null;
+
+/** The state of the open site, followed; null on a page of none. */
+export function useOpenSite(): DeskState | null {
+  const desk = useContext(DeskContext);
+  return useSyncExternalStore<DeskState | null>(desk?.subscribe ?? never, desk?.state ?? nothing);
+}

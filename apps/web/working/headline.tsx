@@ -1,6 +1,6 @@
 import { type ReactNode, useState } from 'react';
 import type { Figure } from '#libs/engine/index.js';
-import { useDesk } from '../desk/use-desk.js';
+import { useOpenSite } from '../desk/use-desk.js';
 import { Quantity } from '../draw/quantity.js';
 import { keptEstimate } from '../line/kept-estimate.js';
 import { latestResult } from '../line/latest-result.js';
@@ -21,11 +21,12 @@ export interface KeyFigure {
 
 /** The answer of a station in a sentence, with the figures that decide it. */
 export function Headline({ children, figures }: { children: ReactNode; figures: readonly KeyFigure[] }) {
-  const { state } = useDesk();
+  const state = useOpenSite();
   const asked = useAskedFigure();
   const [opened, setOpened] = useState<string | null>(null);
   const own = figures.flatMap(({ working }) => working ?? []);
-  const known = [...own, ...((latestResult(state) ?? keptEstimate(state))?.figures ?? [])];
+  const kept = state === null ? null : (latestResult(state) ?? keptEstimate(state));
+  const known = [...own, ...(kept?.figures ?? [])];
   const open = opened ?? (known.some(({ id }) => id === asked) ? asked : null);
   const shown = own.find(({ id }) => id === open);
   return (
