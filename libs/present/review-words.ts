@@ -140,6 +140,7 @@ export function actWords(act: ReviewAct): string {
 /** A value of a field as it is compared: numbers with their digits, nothing as a dash. */
 export function fieldWords(value: unknown): string {
   if (value === undefined) return '–';
+  if (value === null) return 'none';
   if (typeof value === 'number') return formatNumber(value, 'given');
   return typeof value === 'string' ? value : JSON.stringify(value);
 }

@@ -10,6 +10,14 @@ const MOST_ROWS = 400;
 /** More rows than this are folded away until somebody wants them. */
 const OPEN_ROWS = 40;
 
+/** What a revision says of itself, in words; a path of its inputs or results is an address and stands as it is. */
+const ABOUT: Readonly<Record<string, string>> = {
+  createdAt: 'made at',
+  engineVersion: 'engine version',
+  recordHash: 'hash of the record',
+  author: 'prepared by',
+};
+
 /** Two revisions side by side: only the fields that differ. */
 export function differencesPage(before: Revision, after: Revision, found: Differences): string {
   const heads: [string, string] = [`revision ${before.revision}`, `revision ${after.revision}`];
@@ -29,7 +37,7 @@ function part(heading: string, fields: readonly FieldDifference[], [one, other]:
     .slice(0, MOST_ROWS)
     .map(
       ({ path, before, after }) =>
-        html`<tr><th scope="row">${path}</th><td>${fieldWords(before)}</td><td>${fieldWords(after)}</td></tr>`,
+        html`<tr><th scope="row">${ABOUT[path] ?? path}</th><td>${fieldWords(before)}</td><td>${fieldWords(after)}</td></tr>`,
     );
   const rest = fields.length > MOST_ROWS ? html`<p>${fields.length - MOST_ROWS} more stand in the JSON.</p>` : null;
   const table = html`<table class="wide"><thead><tr><th scope="col">field</th><th scope="col">${one}</th><th scope="col">${other}</th></tr></thead><tbody>${rows}</tbody></table>${rest}`;
