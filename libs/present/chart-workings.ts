@@ -6,7 +6,6 @@ import {
   type Outcome,
   practiceFigure,
   rivalFigures,
-  type Study,
 } from '#libs/engine/index.js';
 import type { DayReplay } from './day-replay.js';
 import { labelOf, workingOf } from './figure-words.js';
@@ -30,14 +29,12 @@ const OF_THE_DAY = ['neededKvar', 'connectedKvar', 'leftKvar'];
 /**
  * Workings of one interval: what the replayed day and the phasors show of it.
  * @param outcome the plan or judgement
- * @param study the site and record it was made on
  * @param replay the day
  * @param at index of the interval among the valid ones of the record
  * @returns figures in words, those of the day and those of the currents
  */
 export function momentWorkings(
   outcome: Outcome,
-  study: Study,
   replay: Pick<DayReplay, 'beginS' | 'atS' | 'stacks'>,
   at: number,
 ): { day: Figure[]; currents: Figure[] } {
@@ -46,7 +43,6 @@ export function momentWorkings(
   const stamp = formatMoment(outcome.zone, beginS);
   const found = momentFigures(
     outcome,
-    study,
     at,
     stack.map(({ kvar }) => kvar),
   ).map((figure) => {

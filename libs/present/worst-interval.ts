@@ -1,4 +1,4 @@
-import { type Figure, type Outcome, tanFromPowerFactor } from '#libs/engine/index.js';
+import { type Figure, needFigure, type Outcome, tanFromPowerFactor } from '#libs/engine/index.js';
 import { workingOf } from './figure-words.js';
 import { say } from './language.js';
 
@@ -25,30 +25,22 @@ export function workedInterval(outcome: Outcome): WorkedInterval {
   const p = site.onExport === 'absolute' ? Math.abs(series.busKw[at]!) : Math.max(0, series.busKw[at]!);
   const q = series.busKvar[at]!;
   const b = series.connectedKvar[at]!;
-  const target = site.targetPowerFactor;
   const set = result.control.setPointPowerFactor;
-  const tan = tanFromPowerFactor(target);
   const tanSet = tanFromPowerFactor(set);
+  const need = needFigure('', site, { activeKw: series.busKw[at]!, reactiveKvar: q, needKvar: series.needKvar[at]! });
   const smallest = Math.min(...result.bank.stages.map((stage) => stage.effectiveKvar));
   const steps = [
     measured(say`active power at the bus`, p, 'kW'),
     measured(say`reactive power of the load at the bus`, q, 'kvar'),
     measured(say`connected by the bank`, b, 'kvar'),
-    step(say`tan φ of the target`, [tan, ''], '√(1 / λ^2 − 1)', [['λ', target, '']]),
-    step(say`needed at the bus for the target`, [Math.max(0, q - p * tan), 'kvar'], 'max(0, Q − P · t)', [
-      ['Q', q, 'kvar'],
-      ['P', p, 'kW'],
-      ['t', tan, ''],
-    ]),
+    { ...need, label: say`needed at the bus for the target`, working: workingOf(need) },
     step(say`left after the bank`, [q - b, 'kvar'], 'Q − B', [
       ['Q', q, 'kvar'],
       ['B', b, 'kvar'],
     ]),
-    step(say`short of the target at the bus`, [Math.max(0, q - b - p * tan), 'kvar'], 'max(0, Q − B − P · t)', [
-      ['Q', q, 'kvar'],
+    step(say`short of the target at the bus`, [Math.max(0, need.value - b), 'kvar'], 'max(0, N − B)', [
+      ['N', need.value, 'kvar'],
       ['B', b, 'kvar'],
-      ['P', p, 'kW'],
-      ['t', tan, ''],
     ]),
     step(say`the controller’s deviation`, [q - p * tanSet - b, 'kvar'], 'Q − P · √(1 / λ_s^2 − 1) − B', [
       ['Q', q, 'kvar'],

@@ -1,7 +1,15 @@
 // What a chart shows of one moment, level or order is its formula with the values put in, worked out here by the
 // evaluator of the tests; and it is the number that the chart itself prints or that its columns hold.
 import { describe, expect, it } from 'vitest';
-import { assessBank, type Figure, type Outcome, type Site, studySite, UTC_TABLE } from '#libs/engine/index.js';
+import {
+  assessBank,
+  type Figure,
+  needFigure,
+  type Outcome,
+  type Site,
+  studySite,
+  UTC_TABLE,
+} from '#libs/engine/index.js';
 import {
   hoursWorkings,
   marginWorkings,
@@ -15,6 +23,7 @@ import { hoursAtLevel } from '#libs/present/hours-at-level.js';
 import { phasors } from '#libs/present/phasors.js';
 import { formatQuantity } from '#libs/present/format-number.js';
 import { stageSwitchings } from '#libs/present/stage-switchings.js';
+import { workedInterval } from '#libs/present/worst-interval.js';
 import { chance } from '../support/chance.js';
 import { evaluateFormula } from '../support/evaluate-formula.js';
 import { driftingLoad, madeRecord } from '../support/made-record.js';
@@ -73,7 +82,7 @@ describe.each(SITES)('the workings of the charts of a site %s', (_, parts) => {
     const first = outcome.series.beginS.indexOf(replay.beginS + replay.atS[0]!);
     expect(replay.atS.length).toBeGreaterThan(20);
     for (const i of replay.atS.keys()) {
-      const { day, currents } = momentWorkings(outcome, study, replay, first + i);
+      const { day, currents } = momentWorkings(outcome, replay, first + i);
       expectWorked([...day, ...currents]);
       expect(numberOf(day, 'neededKvar')).toBe(replay.needKvar[i]);
       expect(numberOf(day, 'leftKvar')).toBe(replay.loadKvar[i]! - replay.connectedKvar[i]!);
@@ -82,10 +91,29 @@ describe.each(SITES)('the workings of the charts of a site %s', (_, parts) => {
     }
   });
 
+  it('agree with the need that meets the target, and with no other (control)', () => {
+    const { busKw, busKvar, needKvar } = outcome.series;
+    const at = needKvar.indexOf(Math.max(...needKvar));
+    const worked = (kvar: number) => {
+      const load = { activeKw: busKw[at]!, reactiveKvar: busKvar[at]!, needKvar: kvar };
+      const { formula, inputs } = needFigure('n', outcome.site, load);
+      return evaluateFormula(formula, new Map(inputs.map(({ symbol, value }) => [symbol, value]))).value;
+    };
+    expect(worked(needKvar[at]!)).toBeCloseTo(needKvar[at]!, 8);
+    // what the transformers take up hardly moves with the need, so a wrong one is off by nearly all of its error
+    expect(Math.abs(worked(needKvar[at]! + 10) - (needKvar[at]! + 10))).toBeGreaterThan(9);
+  });
+
+  it('are in the worked interval of the paper the need that the plan rests on', () => {
+    const { beginS, steps } = workedInterval(outcome);
+    const step = steps.find(({ label }) => label === 'needed at the bus for the target');
+    expect(step?.value).toBe(outcome.series.needKvar[outcome.series.beginS.indexOf(beginS)]);
+  });
+
   it('give the currents that the phasors print', () => {
     const replay = dayReplay(outcome, study, outcome.series.beginS[100]!);
     const { beginS, busKw, busKvar, connectedKvar } = outcome.series;
-    const { currents } = momentWorkings(outcome, study, replay, 100);
+    const { currents } = momentWorkings(outcome, replay, 100);
     const moment = { beginS: beginS[100]!, kw: busKw[100]!, loadKvar: busKvar[100]!, bankKvar: connectedKvar[100]! };
     const row = phasors(outcome, moment).table.rows.find(([name]) => name === 'A')!;
     expect(row.slice(1)).toEqual(

@@ -128,7 +128,7 @@ function bankCharts({ outcome, study }: Looked, picks: Picks): NonNullable<Stati
   );
   const moment = { beginS: column[at]!, kw: busKw[at]!, loadKvar: busKvar[at]!, bankKvar: connectedKvar[at]! };
   const hours = hoursAtLevel(outcome);
-  const { day, currents } = momentWorkings(outcome, study, replay, at);
+  const { day, currents } = momentWorkings(outcome, replay, at);
   return {
     replay,
     phasors: phasors(outcome, moment),

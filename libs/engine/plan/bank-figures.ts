@@ -4,6 +4,7 @@ import type { Bank, StageGroup } from '../layout/bank.js';
 import { capacitorV, effectiveKvar, ratedA, stageOhm, tunedOrderH } from '../layout/stage.js';
 import { type Figure, figure } from './figure.js';
 import type { Judged } from './judge-basis.js';
+import type { BankOutcome } from './outcome.js';
 import type { BankResult } from './result.js';
 
 /**
@@ -219,4 +220,19 @@ function inrushFigures(judged: Judged, group: StageGroup, g: number, result: Ban
     ]),
   );
   return found;
+}
+
+/**
+ * Parallel resonance of another bank at the same bus, all its stages in.
+ * @param outcome the plan or judgement beside it
+ * @param bank the other bank
+ * @returns a figure, none where its groups differ in their ratio
+ * @source method-figures
+ */
+export function rivalFigures({ site, result }: Pick<BankOutcome, 'site' | 'result'>, bank: Bank): Figure[] {
+  const total = bank.groups.reduce((sum, group) => sum + group.count * effectiveKvar(group, site.nominalV), 0);
+  return resonanceFigure(bank, total, result.network.shortCircuitMva).map((found) => ({
+    ...found,
+    id: 'rival.parallelOrderClosedFormH',
+  }));
 }

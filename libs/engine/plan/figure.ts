@@ -46,3 +46,6 @@ export function figure(
     inputs: inputs.map(([symbol, input, inputUnit]) => ({ symbol, value: input, unit: inputUnit })),
   };
 }
+
+/** Energy factor, as every figure of one is written. */
+export const PF = { formula: 'E_p / √(E_p^2 + E_q^2)', source: 'IEC 60050-131' };

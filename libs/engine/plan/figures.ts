@@ -1,8 +1,10 @@
 import type { Bank } from '../layout/bank.js';
 import { compensatedSum } from '../quantity/compensated-sum.js';
 import { bankFigures } from './bank-figures.js';
-import { type Figure, figure } from './figure.js';
+import { type Figure, figure, PF } from './figure.js';
+import { needFigure } from './need-figure.js';
 import { distortionFigures, dutyFigures, neutralFigure, supplyFigures } from './network-figures.js';
+import type { RecordSummary } from '../record/record-summary.js';
 import type { Result } from './result.js';
 import type { Operated, Study } from './study.js';
 
@@ -27,9 +29,6 @@ export function figures(study: Study, bank: Bank, operated: Operated, result: Re
   ];
 }
 
-/** Energy factor, as every figure of one is written. */
-export const PF = { formula: 'E_p / √(E_p^2 + E_q^2)', source: 'IEC 60050-131' };
-
 function recordFigures({ record }: Result): Figure[] {
   if (record.powerFactorLagging === null || record.powerFactorNet === null) return [];
   return [
@@ -44,35 +43,49 @@ function recordFigures({ record }: Result): Figure[] {
   ];
 }
 
+/**
+ * What a record counts, and its greatest power.
+ * @param record summary of the record
+ * @returns figures
+ * @source method-figures
+ */
+export function recordCounts(record: Omit<RecordSummary, 'notes' | 'gradeRule'>): Figure[] {
+  const { beginS, endS, intervalS, intervals, missing, maxKw } = record;
+  const source = 'method, record';
+  const span: readonly (readonly [string, number, string])[] = [
+    ['t_b', beginS, 's'],
+    ['t_e', endS, 's'],
+    ['T', intervalS, 's'],
+  ];
+  return [
+    figure('record.intervals', { value: intervals, unit: '' }, { formula: '(t_e − t_b) / T − m', source }, [
+      ...span,
+      ['m', missing, ''],
+    ]),
+    figure('record.missing', { value: missing, unit: '' }, { formula: '(t_e − t_b) / T − n', source }, [
+      ...span,
+      ['n', intervals, ''],
+    ]),
+    figure(
+      'record.maxKw',
+      { value: maxKw, unit: 'kW' },
+      { formula: 'P', source: 'the meter: greatest mean of an interval' },
+      [['P', maxKw, 'kW']],
+    ),
+  ];
+}
+
 function requirementFigures(study: Study, result: Result): Figure[] {
   const { requirement } = result;
   const worst = study.needKvar.indexOf(requirement.maxKvar);
-  const p = study.load.activeKw[worst]!;
-  const q = study.load.reactiveKvar[worst]!;
   const ascending = Float64Array.from(study.needKvar).sort();
-  const need =
-    study.load.metering.at === 'bus'
-      ? figure(
-          'requirement.maxKvar',
-          { value: requirement.maxKvar, unit: 'kvar' },
-          { formula: 'max(0, Q − P · √(1 / λ^2 − 1))', source: 'method, requirement' },
-          [
-            ['Q', q, 'kvar'],
-            ['P', study.target.onExport === 'absolute' ? Math.abs(p) : Math.max(0, p), 'kW'],
-            ['λ', requirement.targetPowerFactor, ''],
-          ],
-        )
-      : figure(
-          'requirement.maxKvar',
-          { value: requirement.maxKvar, unit: 'kvar' },
-          { formula: 'Q − Q_t', source: 'method, requirement, meter at the primary' },
-          [
-            ['Q_t', q - requirement.maxKvar, 'kvar'],
-            ['Q', q, 'kvar'],
-          ],
-        );
+  const load = {
+    activeKw: study.load.activeKw[worst]!,
+    reactiveKvar: study.load.reactiveKvar[worst]!,
+    needKvar: requirement.maxKvar,
+  };
   return [
-    need,
+    needFigure('requirement.maxKvar', study.site, load),
     quantileFigure('requirement.p99Kvar', requirement.p99Kvar, ascending, 0.99),
     quantileFigure('requirement.p95Kvar', requirement.p95Kvar, ascending, 0.95),
     figure(

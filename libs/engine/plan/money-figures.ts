@@ -1,3 +1,4 @@
+import type { Capital } from '../money/capital.js';
 import { type CashMonth, presentValue, type SettledFinance } from '../money/cash-flow.js';
 import type { Money, Worth } from '../money/money-result.js';
 import { type Figure, figure } from './figure.js';
@@ -112,4 +113,21 @@ function annuityFigure(
     ['d', discountPct / 100, ''],
     years,
   ]);
+}
+
+/**
+ * What a bank costs new, its items added up.
+ * @param capital items and total
+ * @param currency unit of the amounts
+ * @returns a figure
+ * @source method-figures
+ */
+export function capitalFigure({ total, lines }: Capital, currency: string): Figure {
+  const symbols = lines.map((_, at) => `a_${at + 1}`);
+  return figure(
+    'money.capital.total',
+    { value: total, unit: currency },
+    { formula: symbols.join(' + '), source: 'the price book, item by item' },
+    lines.map(({ amount }, at) => [symbols[at]!, amount, currency]),
+  );
 }

@@ -1,3 +1,4 @@
+import type { MarginMap } from '../duty/margin-map.js';
 import { type NetworkLevel, strongestOhm } from '../network/network-check.js';
 import { neutralA } from '../network/summation.js';
 import { supplyPath } from '../supply/supply-path.js';
@@ -161,4 +162,25 @@ function distortionFigure(id: string, level: NetworkLevel | null): Figure[] {
       level.orders.map(({ voltagePct }, at) => [symbols[at]!, voltagePct, '%'] as const),
     ),
   ];
+}
+
+/**
+ * Harmonic voltage of one level as a share of its limit, order by order.
+ * @param margins of the bank
+ * @param level index into its levels
+ * @returns figures, their names beginning with `margins[` and the level's index
+ * @source method-figures
+ */
+export function marginFigures({ ordersH, limitPct, voltagePct, sharePct }: MarginMap, level: number): Figure[] {
+  return ordersH.map((orderH, k) =>
+    figure(
+      `margins[${level}].order${orderH}`,
+      { value: sharePct[level]![k]!, unit: '%' },
+      { formula: '100 · U_h / U_max', source: 'method, limits: the worst corner and count of stages' },
+      [
+        ['U_h', voltagePct[level]![k]!, '%'],
+        ['U_max', limitPct[k]!, '%'],
+      ],
+    ),
+  );
 }

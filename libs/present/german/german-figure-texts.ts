@@ -168,7 +168,6 @@ export const GERMAN_FIGURE_TEXTS: Readonly<Record<string, string>> = {
   'active power at the bus': 'Wirkleistung an der Sammelschiene',
   'reactive power of the load at the bus': 'Blindleistung der Last an der Sammelschiene',
   'connected by the bank': 'von der Anlage zugeschaltet',
-  'tan φ of the target': 'tan φ des Zielwerts',
   'needed at the bus for the target': 'an der Sammelschiene für den Zielwert benötigt',
   'left after the bank': 'Rest nach der Anlage',
   'short of the target at the bus': 'an der Sammelschiene zum Zielwert fehlend',
