@@ -1,5 +1,5 @@
 import { InputProblem } from '#libs/engine/index.js';
-import { LANGUAGES, type Language } from '#libs/present/languages.js';
+import { LANGUAGES, type Language, languageOf } from '#libs/present/languages.js';
 import type { CommandLine } from './command.js';
 import { usage } from './command-line.js';
 import { readSmall } from './input-file.js';
@@ -18,20 +18,17 @@ export interface PaperSheet {
  * @throws InputProblem where size or language is unknown, the logo is refused, or none of them has a proposal to stand on
  */
 export async function paperSheet({ values }: CommandLine): Promise<PaperSheet> {
-  const [size, logo, language = 'en'] = ['paper', 'logo', 'language'].map((name) => values.get(name));
+  const [size, logo, letters = 'en'] = ['paper', 'logo', 'language'].map((name) => values.get(name));
   if (['paper', 'logo', 'language'].some((name) => values.has(name)) && !values.has('pdf')) {
     throw new InputProblem([usage('--pdf OUT beside --paper, --logo or --language', 'none')]);
   }
   const paper = size ?? 'A4';
   if (paper !== 'A4' && paper !== 'Letter')
     throw new InputProblem([usage('--paper A4 or Letter', JSON.stringify(paper))]);
-  if (!isLanguage(language))
-    throw new InputProblem([usage(`--language ${LANGUAGES.join(' or ')}`, JSON.stringify(language))]);
+  const language = languageOf(letters);
+  if (language === null)
+    throw new InputProblem([usage(`--language ${LANGUAGES.join(' or ')}`, JSON.stringify(letters))]);
   return { paper, language, logo: logo === undefined ? null : await readChecked(logo) };
-}
-
-function isLanguage(text: string): text is Language {
-  return LANGUAGES.some((language) => language === text);
 }
 
 /** What can read a logo is loaded only where there is one. */

@@ -8,7 +8,7 @@ import { WorkerPool } from '#libs/jobs/pool/worker-pool.js';
 import { againWords } from '#libs/present/again-words.js';
 import { catalogueOf } from '#libs/present/catalogue-of.js';
 import { inLanguage } from '#libs/present/language.js';
-import { LANGUAGES, type Language } from '#libs/present/languages.js';
+import { LANGUAGES, type Language, languageOf } from '#libs/present/languages.js';
 import { readRecord } from '#libs/store/records.js';
 import type { Revision } from '#libs/store/revision.js';
 import { Store } from '#libs/store/store.js';
@@ -45,7 +45,7 @@ export class ReevaluationController {
   @Get('proposal.pdf')
   @Needs('viewer', 'Draws the same as a paper, a draft of no revision: ?language=en or de. Nothing is kept.')
   async proposal(@Param() path: RevisionPath, @Query() query: { language?: unknown }, @Res() reply: FastifyReply) {
-    const language = languageOf(query.language);
+    const language = askedLanguage(query.language);
     const { revision, task } = await this.#asked(path, reply);
     const reason = inLanguage(catalogueOf(language), () => againWords(revision));
     const paper: ReevaluationPaperTask = { ...task, reason, language };
@@ -77,10 +77,10 @@ export class ReevaluationController {
 }
 
 /** @throws InputProblem where no paper comes in what was asked for */
-function languageOf(asked: unknown): Language {
+function askedLanguage(asked: unknown): Language {
   if (asked === undefined) return 'en';
-  const known = LANGUAGES.find((language) => language === asked);
-  if (known !== undefined) return known;
+  const known = languageOf(asked);
+  if (known !== null) return known;
   const found = JSON.stringify(String(asked).slice(0, 60));
   throw new InputProblem([{ code: 'out-of-range', path: 'language', expected: LANGUAGES.join(' or '), found }]);
 }

@@ -208,8 +208,10 @@ export class SiteDesk {
   }
 
   #hold(): void {
-    fetchHeldPapers(this.#state.document).then(
+    const { document } = this.#state;
+    fetchHeldPapers(document).then(
       (held) => {
+        if (document?.papers !== this.#state.document?.papers) return; // another was chosen meanwhile
         this.#set({ held });
         this.#look(true);
       },

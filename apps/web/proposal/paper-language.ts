@@ -1,13 +1,12 @@
 import { useSyncExternalStore } from 'react';
-import { LANGUAGES, type Language } from '#libs/present/languages.js';
+import { type Language, languageOf } from '#libs/present/languages.js';
 
 const KEY = 'varwright:paper-language';
 const listeners = new Set<() => void>();
 
 /** The language that papers are asked for in from this browser. */
 export function paperLanguage(): Language {
-  const chosen = localStorage.getItem(KEY);
-  return LANGUAGES.find((language) => language === chosen) ?? 'en';
+  return languageOf(localStorage.getItem(KEY)) ?? 'en';
 }
 
 /** What a request for a plan says of its paper. */

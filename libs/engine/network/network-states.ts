@@ -4,8 +4,8 @@ import { MOST_STATES, type NetworkState, type Topology } from './topology.js';
 
 /**
  * Every way the network can stand, the normal one first: couplers and generators marked `either` both ways, switched
- * capacitors at every count, further banks at every level, and where asked each transformer out in turn. A transformer's absence that would leave a
- * bus without supply is left out: that board is then dead.
+ * capacitors at every count, further banks at every level, and where asked each transformer out in turn. A transformer's
+ * absence that would leave a bus without supply is left out: that board is then dead.
  * @param topology settled topology
  * @returns states; their number does not depend on the bank
  * @throws InputProblem where a bus has no supply in normal standing, or there are more than 256 states
