@@ -52,6 +52,11 @@ for (const { name, available, create } of databases) {
       expect((await plan({ papers: { tariff: { name: head.name, version: 1 } } })).revision).toBe(1);
       const listed = (await server.ask('GET', '/api/papers')).body.papers as { version: number }[];
       expect(listed.map(({ version }) => version)).toEqual([2, 1]);
+      // a paper whose document has no name lends it its own
+      const { name: _, ...nameless } = tariff(0.02);
+      await keep({ kind: 'tariff', name: 'Small hours', date: '2026-01-01', document: nameless });
+      const lent = await plan({ papers: { tariff: { name: 'Small hours' } } });
+      expect(lent.inputs.site.tariff).toEqual({ ...nameless, name: 'Small hours' });
     });
 
     it('are refused with the path of what does not fit', async () => {

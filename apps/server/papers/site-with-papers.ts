@@ -27,7 +27,8 @@ export async function siteWithPapers(
     const paper = await store.read((manager) =>
       findPaper(manager, { organisationId, kind, ...reference }, `papers.${kind}`),
     );
-    whole[kind] = paper.document;
+    // a tariff that names itself otherwise keeps its name
+    whole[kind] = { name: paper.name, ...paper.document };
     papers[kind] = { name: paper.name, version: paper.version, date: paper.date };
   }
   if (papers.tariff === undefined && papers.prices === undefined) return given;

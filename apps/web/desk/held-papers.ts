@@ -60,7 +60,8 @@ export function withHeldPapers(document: SiteDocument, held: HeldPapers): SiteDo
   const whole: SiteDocument = rest;
   for (const kind of PAPER_KINDS) {
     const paper = held[kind];
-    if (paper !== undefined && paperNamed(document, kind)?.name === paper.name) whole[kind] = paper.document;
+    if (paper !== undefined && paperNamed(document, kind)?.name === paper.name)
+      whole[kind] = { name: paper.name, ...paper.document };
   }
   return whole;
 }

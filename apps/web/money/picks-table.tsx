@@ -10,10 +10,12 @@ export function PicksTable({ money, papers }: { money: Money; papers: MoneyPaper
   const picks = namedPicks(money, papers);
   if (picks.length === 0) {
     return (
-      <p className="caption">
-        Nothing was compared: the bank as it stands is priced as new. A plan from tariff, prices and catalogue weighs it
-        against the others.
-      </p>
+      <section className="section">
+        <p className="caption">
+          Nothing was compared: the bank as it stands is priced as new. A plan from tariff, prices and catalogue weighs
+          it against the others.
+        </p>
+      </section>
     );
   }
   const taken = picks.find(({ isRecommended }) => isRecommended);
