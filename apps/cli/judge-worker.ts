@@ -6,6 +6,8 @@ import { recordBytes } from '#libs/contract/record-hash.js';
 import {
   assessBank,
   assessEstimate,
+  type BankTonight,
+  bankTonight,
   ENGINE_VERSION,
   type EstimateOutcome,
   type EstimateResult,
@@ -59,11 +61,12 @@ export function judgeTask({ task, port }: { task: JudgeTask; port: MessagePort }
   return packAnswer(async () => {
     const watch = portWatch(port);
     const outcome = task.record === null ? byEstimate(task, watch) : byRecord(task, task.record, watch);
+    const tonight = tonightOf(task);
     return {
       result: outcome.result,
-      report: isEstimate(outcome) ? estimateReport(outcome) : resultReport(outcome),
+      report: isEstimate(outcome) ? estimateReport(outcome) : resultReport(outcome, tonight),
       row: siteRow(outcome),
-      proposal: task.sheet === null ? null : await proposalOf(outcome, task, task.sheet),
+      proposal: task.sheet === null ? null : await proposalOf(outcome, task, { ...task.sheet, tonight }),
       outcome: task.wantsOutcome ? outcome : null,
     };
   });
@@ -82,11 +85,17 @@ function byEstimate({ kind, site, zone }: JudgeTask, watch: Watch): EstimateOutc
   return { ...computed, result: putEstimateInWords(computed.result) };
 }
 
+/** A bank that stands there and is over a limit comes with what to do at once. */
+function tonightOf({ kind, site, record, zone }: JudgeTask): BankTonight | null {
+  if (kind === 'plan' || record === null || site.bank?.installed !== true) return null;
+  return bankTonight(site, record, zone);
+}
+
 /** The drawing of papers is loaded only where one is wanted. */
 async function proposalOf(
   outcome: Outcome | EstimateOutcome,
   { kind, site, record, zone }: JudgeTask,
-  sheet: PaperSheet,
+  more: PaperSheet & { tonight: BankTonight | null },
 ): Promise<Uint8Array> {
   const { renderProposal } = await import('#libs/proposal/render-proposal.js');
   const recordHash = record === null ? null : sha256(recordBytes(record));
@@ -100,7 +109,7 @@ async function proposalOf(
     recordHash,
     engineVersion: ENGINE_VERSION,
     date: outcome.site.asOf,
-    ...sheet,
+    ...more,
   });
 }
 

@@ -157,6 +157,7 @@ export * from './reevaluation/result-changes.js';
 export * from './reevaluation/since-when.js';
 export * from './reevaluation/site-as-measured.js';
 export * from './reevaluation/stages-out.js';
+export * from './reevaluation/tonight.js';
 export * from './reevaluation/weigh-stages.js';
 export * from './requirement/bill-bounds.js';
 export * from './requirement/bus-load.js';

@@ -19,7 +19,7 @@ const WORDS: Record<DeviceName, { device: string; met: string; need: string }> =
   'capacitor.voltage': {
     device: 'capacitor, rated voltage',
     met: '{value} on it at the highest, with the rise of the kvar connected',
-    need: '{least} or more',
+    need: '{least} or more, its continuous voltage counted',
   },
   'capacitor.crest': {
     device: 'capacitor, crest voltage',
@@ -51,7 +51,7 @@ const WORDS: Record<DeviceName, { device: string; met: string; need: string }> =
   'reactor.current': {
     device: 'reactor, thermal current',
     met: '{value} rms, harmonics in',
-    need: '{least} or more without end',
+    need: '{least} or more continuous',
   },
   'reactor.linearity': {
     device: 'reactor, linearity',

@@ -151,6 +151,6 @@ function questions({ site, result }: Outcome | EstimateOutcome): OperatorPage['q
       taken: engineName(result.limits.voltage),
     },
     { question: say`consent to connect the bank, and to the voltage change of a stage`, taken: '–' },
-    { question: say`capacitors of others near by, in service or planned`, taken: say`none` },
+    { question: say`capacitors of others near by, in service or planned`, taken: say`none entered` },
   ];
 }

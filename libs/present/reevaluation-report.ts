@@ -10,9 +10,9 @@ import {
   reevaluationFinding,
   remedyRows,
   sinceSentences,
-  tonightSentences,
 } from './reevaluation-words.js';
 import { finished, leftTableLines, wrapped } from './terminal-lines.js';
+import { measuredGroupSentences, tonightSentences } from './tonight-words.js';
 import { noPermission } from './verdict-words.js';
 
 /**
@@ -31,6 +31,7 @@ export function reevaluationReport({ reevaluation, after }: Reevaluated): string
     '',
     ...tonight.flatMap((sentence) => wrapped(`! ${sentence}`, '  ')),
     ...(tonight.length === 0 ? [] : ['']),
+    ...measuredGroupSentences(reevaluation).flatMap((sentence) => [...wrapped(sentence, ''), '']),
     ...part(INPUT_HEADS, inputRows(reevaluation)),
     ...part(CHANGE_HEADS, changeRows(reevaluation, currency)),
     ...part(REMEDY_HEADS, remedyRows(reevaluation, currency)),

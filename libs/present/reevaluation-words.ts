@@ -1,20 +1,11 @@
-import type {
-  MeasuredEntry,
-  Reevaluation,
-  Remedy,
-  ResultChange,
-  SinceWhen,
-  StagesOut,
-  ToMend,
-  Verdict,
-} from '#libs/engine/index.js';
-import { deviceName } from './device-words.js';
+import type { MeasuredEntry, Reevaluation, Remedy, ResultChange, SinceWhen, Verdict } from '#libs/engine/index.js';
 import { countWord } from './findings.js';
 import { engineName } from './engine-name.js';
 import { formatNumber, formatQuantity } from './format-number.js';
 import { say, words } from './language.js';
 import { formatDate, formatMonth } from './local-stamp.js';
 import { plainName } from './plain-name.js';
+import { stagesOutWords } from './tonight-words.js';
 import { VERDICT_WORDS, verdictWords } from './verdict-words.js';
 
 const FIGURE_NAMES: Record<ResultChange['id'], string> = words({
@@ -70,50 +61,6 @@ function nameOf({ id, name, group }: ResultChange): string {
   return group === null ? engineName(name) : say`${engineName(name)}, group ${group + 1}`;
 }
 
-/**
- * What to do tonight with a bank that is over a limit: which stages out, by whom, until when.
- * @param reevaluation the bank judged again
- * @returns sentences; none where the bank is over no limit
- */
-export function tonightSentences({ tonight, stages }: Reevaluation): string[] {
-  if (tonight === null) return [];
-  const { within, nearLimits, until } = tonight;
-  const sentences = [
-    say`Tonight: keep out ${stagesOutWords(within, stages)}. ${leftWords(within)}`,
-    say`A qualified person switches them off, secures them against reconnection and waits out their discharge, as the
-      section of cautions says; the controller must not be able to connect them.`,
-    say`They stay out until ${listed(until.map(toMendWords))} ${until.length === 1 ? say`has` : say`have`} been mended and the bank has been judged again.`,
-  ];
-  if (nearLimits !== null) {
-    sentences.push(
-      say`With ${stagesOutWords(nearLimits, stages)} out nothing is over a limit, though near one: a second best, to be
-        accepted by whoever answers for the installation.`,
-    );
-  }
-  return sentences;
-}
-
-function leftWords({ keptKvar, verdict }: StagesOut): string {
-  if (keptKvar === 0) return say`No stage may stay in.`;
-  return say`With what is left, ${formatQuantity(keptKvar, 'kvar')}, every level is ${VERDICT_WORDS[verdict]} in every corner.`;
-}
-
-function stagesOutWords({ out, outKvar }: StagesOut, stages: readonly MeasuredEntry[]): string {
-  const parts = stages.flatMap((entry, k) => (out[k]! === 0 ? [] : [entryWords(entry, out[k]!)]));
-  return parts.length === 0 ? say`nothing` : say`${listed(parts)} (${formatQuantity(outKvar, 'kvar')} at the bus)`;
-}
-
-function entryWords({ group, stage, count, ratedKvar }: MeasuredEntry, out: number): string {
-  const size = formatQuantity(ratedKvar, 'kvar');
-  if (stage !== null) return say`stage ${stage} of group ${group + 1}, ${size} as it measures`;
-  return say`${out === count && count > 1 ? say`all ` : ''}${countWord(out)} of group ${group + 1}, ${size} each`;
-}
-
-function toMendWords({ kind, name, group }: ToMend): string {
-  const words = kind === 'device' ? deviceName(name) : engineName(name);
-  return group === null ? words : say`${words} of group ${group + 1}`;
-}
-
 /** Heads of the table of remedies. */
 export const REMEDY_HEADS = words([
   'what would mend it',
@@ -152,9 +99,11 @@ function remedyWords(remedy: Remedy, stages: readonly MeasuredEntry[]): string {
     case 'setPoint':
       return say`change the set point to ${formatNumber(remedy.setPointPowerFactor, 'given')}`;
     case 'remove':
-      return say`leave out ${listed(stages.flatMap((entry, k) => (remedy.out![k]! === 0 ? [] : [entryWords(entry, remedy.out![k]!)])))}; ${setPoint}`;
+      return say`leave out ${stagesOutWords(remedy.out!, stages)}; ${setPoint}`;
     case 'replace':
-      return say`replace ${count} by new ones of ${plate}; ${setPoint}`;
+      return remedy.stages === 1
+        ? say`replace ${count} by a new one of ${plate}; ${setPoint}`
+        : say`replace ${count} by new ones of ${plate}; ${setPoint}`;
     case 'restore':
       return say`put back ${count} of ${plate}; ${setPoint}`;
     case 'renew':
@@ -292,9 +241,4 @@ function waysWords(remedies: readonly Remedy[]): string {
   if (remedies.length === 0) return say`nothing to mend`;
   if (mend === 0) return say`no single way mends it whole`;
   return mend === 1 ? say`one way to mend it` : say`${countWord(mend)} ways to mend it`;
-}
-
-function listed(parts: readonly string[]): string {
-  if (parts.length < 2) return parts.join('');
-  return say`${parts.slice(0, -1).join(', ')} and ${parts.at(-1)!}`;
 }

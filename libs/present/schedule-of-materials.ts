@@ -50,7 +50,7 @@ function reactorRating(reactorPct: number, row: Rows): string {
   const linear = leastWords(row('reactor.linearity'));
   return [
     formatQuantity(reactorPct, '%', 'given'),
-    ...(thermal === null ? [] : [say`${thermal} without end`]),
+    ...(thermal === null ? [] : [say`${thermal} continuous`]),
     ...(linear === null ? [] : [say`linear to ${linear}`]),
   ].join(', ');
 }

@@ -1,6 +1,7 @@
 import {
   type BankOutcome,
   type BankResult,
+  type BankTonight,
   type EstimateOutcome,
   isRecordSign,
   type Outcome,
@@ -20,6 +21,7 @@ import { remarkConsequence, remarkSentence } from './remark-words.js';
 import { spareWaysLines } from './spare-ways-lines.js';
 import { HISTORY_HEADS, historyRows } from './stage-history-words.js';
 import { finished, tableLines, wrapped } from './terminal-lines.js';
+import { tonightSentences } from './tonight-words.js';
 import { countDuties, noPermission, verdictWords } from './verdict-words.js';
 
 const LABEL_WIDTH = 26;
@@ -27,9 +29,10 @@ const LABEL_WIDTH = 26;
 /**
  * The answer of `plan` or `assess` for a terminal.
  * @param outcome the plan or judgement
+ * @param tonight what to do at once with an installed bank, null for any other
  * @returns lines of plain text, ending in a line end
  */
-export function resultReport(outcome: Outcome): string {
+export function resultReport(outcome: Outcome, tonight: BankTonight | null = null): string {
   const { result, site, zone } = outcome;
   const { requirement, operation } = result;
   const target = formatNumber(requirement.targetPowerFactor, 'given');
@@ -37,7 +40,8 @@ export function resultReport(outcome: Outcome): string {
   const lowest = operation.months.flatMap(({ powerFactorLagging: value }) => (value === null ? [] : [value]));
   const lines = [
     plainName(site.name),
-    `Proposed: ${proposedWords(outcome)}`,
+    ...(tonight === null ? [] : tonightSentences(tonight)).flatMap((sentence) => wrapped(`! ${sentence}`, '  ')),
+    `${outcome.kind === 'plan' ? 'Proposed' : 'Judged'}: ${proposedWords(outcome)}`,
     `Verdict: ${verdictWords(result.verdict)}. ${noPermission()}`,
     '',
     ...recordLines(result.record, zone),
@@ -79,7 +83,7 @@ export function estimateReport(outcome: EstimateOutcome): string {
   return finished([
     plainName(site.name),
     'ESTIMATE, without a meter’s record',
-    `Proposed, ${estimateWords(outcome)}`,
+    `${outcome.kind === 'plan' ? 'Proposed' : 'Judged'}, ${estimateWords(outcome)}`,
     `Verdict: ${verdictWords(result.verdict)}. ${noPermission()}`,
     '',
     ...needLines(outcome),

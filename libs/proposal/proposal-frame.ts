@@ -1,4 +1,4 @@
-import type { Reevaluation } from '#libs/engine/index.js';
+import type { BankTonight, Reevaluation } from '#libs/engine/index.js';
 import type { Language } from '#libs/present/languages.js';
 import type { RevisionNumbers } from '#libs/present/revision-numbers.js';
 import type { PaperSize } from './paper.js';
@@ -45,4 +45,6 @@ export interface ProposalFrame {
   logo?: Uint8Array | null;
   /** where an installed bank was judged again */
   reevaluation?: Reevaluation;
+  /** where a bank that stands there was judged by itself */
+  tonight?: BankTonight | null;
 }

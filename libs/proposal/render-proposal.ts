@@ -73,7 +73,7 @@ function reworded(outcome: Outcome | EstimateOutcome): Outcome | EstimateOutcome
 function drawParts(paper: Paper, outcome: Outcome | EstimateOutcome, frame: ProposalFrame, logo: Logo | null): void {
   const header = setHeader(paper, frame, outcome);
   paper.begin(header.contentTop);
-  drawDecision(paper, outcome, logo);
+  drawDecision(paper, outcome, { logo, tonight: frame.reevaluation ?? frame.tonight ?? null });
   drawReevaluation(paper, outcome, frame.reevaluation);
   drawSignatures(paper, outcome, frame);
   drawFindings(paper, outcome);

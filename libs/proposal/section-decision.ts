@@ -1,5 +1,6 @@
 import {
   type BankOutcome,
+  type BankTonight,
   type EstimateOutcome,
   isEstimate,
   type Outcome,
@@ -18,6 +19,7 @@ import { HAIR, INK, PAPER, SOFT, STROKE } from './ink.js';
 import { drawVerdictMark } from './marks.js';
 import { LABEL, leading, type Paper, rise, STRONG } from './paper.js';
 import type { Logo } from './read-logo.js';
+import { drawTonight } from './section-tonight.js';
 import { BODY, type Line, type Style } from './typesetter.js';
 
 /** A long name takes a smaller size, so that the decision stays on the first page. */
@@ -30,8 +32,18 @@ const BAND = 24;
 /** Share of the box that the sentence takes; the figures stand beside it. */
 const SENTENCE_SHARE = 0.43;
 
-/** Title and decision box: what is proposed, how it was judged, what it does not cover, and the single-line diagram. */
-export function drawDecision(paper: Paper, outcome: Outcome | EstimateOutcome, logo: Logo | null): void {
+/** What stands before the decision. */
+export interface DecisionHead {
+  logo: Logo | null;
+  /** what to do at once with a bank that is over a limit; null where nothing is */
+  tonight: BankTonight | null;
+}
+
+/**
+ * Title and decision box: what is proposed, how it was judged, what it does not cover, and the single-line diagram; before
+ * it what to do at once with an installed bank that is over a limit.
+ */
+export function drawDecision(paper: Paper, outcome: Outcome | EstimateOutcome, { logo, tonight }: DecisionHead): void {
   const { site } = outcome;
   const title = [say`Power-factor correction for ${plainName(site.name)}`];
   const room = logo === null ? null : drawLogo(paper, logo, plainName(site.name));
@@ -40,6 +52,7 @@ export function drawDecision(paper: Paper, outcome: Outcome | EstimateOutcome, l
   paper.paragraph(title, { style, width, tag: 'H1', after: 2 });
   paper.paragraph([boardWords(outcome)], { style: { ...BODY, ink: SOFT }, width, after: 10 });
   if (room !== null) paper.y = Math.max(paper.y, room.foot + 10);
+  if (tonight !== null) drawTonight(paper, tonight);
   drawBox(paper, outcome);
 }
 
@@ -83,16 +96,19 @@ function sentences(paper: Paper, outcome: Outcome | EstimateOutcome, width: numb
       : say`${count.judged} rows judged: ${count.clear} within limits, ${count.watch} near a limit, ${count.avoid} over a limit.
         ${count.notJudged} not judged.`;
   return [
-    set(
-      isEstimate(outcome) ? say`Proposed, ${estimateWords(outcome)}` : say`Proposed: ${proposedWords(outcome)}`,
-      HEADLINE,
-      5,
-    ),
+    set(headline(outcome), HEADLINE, 5),
     set(verdictSentence(outcome), STRONG, 6, 18),
     set(judged, BODY, 5),
     set(say`Does not cover: ${notCovered(outcome)}.`, BODY, 5),
     set(noPermission(), BODY, 0),
   ];
+}
+
+function headline(outcome: Outcome | EstimateOutcome): string {
+  if (outcome.kind === 'assess') {
+    return isEstimate(outcome) ? say`Judged, ${estimateWords(outcome)}` : say`Judged: ${proposedWords(outcome)}`;
+  }
+  return isEstimate(outcome) ? say`Proposed, ${estimateWords(outcome)}` : say`Proposed: ${proposedWords(outcome)}`;
 }
 
 function verdictSentence({ result, site }: BankOutcome): string {
@@ -199,7 +215,12 @@ function bandWords(outcome: Outcome | EstimateOutcome): string | null {
   const passed = `${VERDICT_WORDS.avoid[0]!.toUpperCase()}${VERDICT_WORDS.avoid.slice(1)}`;
   if (isEstimate(outcome))
     return say`${over ? say`${passed}, and an estimate` : say`Estimate, no record`}: not to be built as it stands`;
+  if (over && isInstalled(outcome)) return say`${passed}: not to stay in service as it stands`;
   return over ? say`${passed}: not to be built as it stands` : null;
+}
+
+function isInstalled({ kind, site }: BankOutcome): boolean {
+  return kind === 'assess' && site.facts.bank?.installed === true;
 }
 
 /** Across the box: black, with its mark reversed. */

@@ -11,8 +11,8 @@ import {
   reevaluationFinding,
   remedyRows,
   sinceSentences,
-  tonightSentences,
 } from '#libs/present/reevaluation-words.js';
+import { measuredGroupSentences } from '#libs/present/tonight-words.js';
 import { NOTE, type Paper } from './paper.js';
 import { type Column, drawTable } from './table.js';
 import { BODY, type Style } from './typesetter.js';
@@ -25,20 +25,21 @@ const REMEDY_SHARES = [52, 18, 15, 15, 16, 16];
 const INPUT_SHARES = [50, 25, 25];
 const LIKE_SHARES = [54, 23, 23];
 
-/** A bank judged again: what to do first, what changed in numbers, what would mend it, and since when. */
+/** A bank judged again: what changed in numbers, what would mend it, and since when. */
 export function drawReevaluation(paper: Paper, { site }: BankOutcome, reevaluation: Reevaluation | undefined): void {
   if (reevaluation === undefined) return;
   const currency = site.currency ?? '';
   paper.heading('A', say`Judged again: ${reevaluationFinding(reevaluation)}`, { level: 3, keep: 90 });
-  const tonight = tonightSentences(reevaluation);
-  tonight.forEach((sentence, k) => {
-    paper.paragraph([k === 0 ? { text: sentence, weight: 'semibold' } : sentence]);
-  });
-  drawPart(paper, INPUT_HEADS, INPUT_SHARES, inputRows(reevaluation));
-  drawPart(paper, CHANGE_HEADS, CHANGE_SHARES, changeRows(reevaluation, currency));
-  drawPart(paper, REMEDY_HEADS, REMEDY_SHARES, remedyRows(reevaluation, currency));
+  for (const sentence of measuredGroupSentences(reevaluation)) paper.paragraph([sentence]);
+  drawPart(paper, { heads: INPUT_HEADS, shares: INPUT_SHARES, right: [] }, inputRows(reevaluation));
+  drawPart(paper, { heads: CHANGE_HEADS, shares: CHANGE_SHARES, right: [1, 2, 3] }, changeRows(reevaluation, currency));
+  drawPart(
+    paper,
+    { heads: REMEDY_HEADS, shares: REMEDY_SHARES, right: [2, 3, 4, 5] },
+    remedyRows(reevaluation, currency),
+  );
   for (const sentence of sinceSentences(reevaluation)) paper.paragraph([sentence]);
-  drawPart(paper, LIKE_HEADS, LIKE_SHARES, likeRows(reevaluation));
+  drawPart(paper, { heads: LIKE_HEADS, shares: LIKE_SHARES, right: [1, 2] }, likeRows(reevaluation));
   paper.paragraph(
     [
       say`Before and after are judged by the same engine, the bank as it measures. A way to mend it is weighed by itself, with
@@ -50,12 +51,19 @@ export function drawReevaluation(paper: Paper, { site }: BankOutcome, reevaluati
   );
 }
 
-function drawPart(paper: Paper, heads: readonly string[], shares: readonly number[], rows: readonly string[][]): void {
+interface Part {
+  heads: readonly string[];
+  shares: readonly number[];
+  /** columns of figures */
+  right: readonly number[];
+}
+
+function drawPart(paper: Paper, { heads, shares, right }: Part, rows: readonly string[][]): void {
   if (rows.length === 0) return;
   const columns: Column[] = heads.map((head, k) => ({
     head,
     share: shares[k]!,
-    align: k === 0 || head === 'verdict' ? 'left' : 'right',
+    align: right.includes(k) ? 'right' : 'left',
   }));
   drawTable(paper, columns, [...rows], { style: SMALL, padding: 2.4, after: 5 });
 }

@@ -2,6 +2,7 @@
 import { readFileSync } from 'node:fs';
 import { join } from 'node:path';
 import { afterEach, beforeAll, beforeEach, describe, expect, it } from 'vitest';
+import { textOf } from '../support/pdf-text.js';
 import { buildProgram, meterCsv, site, Workplace } from './cli-program.js';
 
 beforeAll(buildProgram, 120_000);
@@ -44,6 +45,23 @@ describe('assess --before', () => {
     expect(stdout).toContain('! Tonight: keep out ');
     expect(stdout.indexOf('Tonight')).toBeLessThan(stdout.indexOf('what would mend it'));
     expect(readFileSync(pdf).subarray(0, 5).toString()).toBe('%PDF-');
+  });
+
+  it('says it first where an installed bank is judged by itself', () => {
+    const loads = {
+      distorting: [{ name: 'furnace', fundamentalA: 400, spectrum: 'six-pulse-no-choke' }],
+      backgroundPct: [],
+    };
+    const pdf = join(work.dir, 'alone.pdf');
+    const { code, stdout } = work.run(['assess', now({ loads }), '--load', load(), '--pdf', pdf]);
+    expect(code).toBe(6);
+    expect(stdout.split('\n')[1]).toMatch(/^! Tonight: keep out /);
+    const text = textOf(readFileSync(pdf));
+    const places = ['Tonight: keep out', 'not to stay in service as it stands', 'page 2 of'].map((one) =>
+      text.indexOf(one),
+    );
+    expect(places[0]).toBeGreaterThan(0);
+    expect(places).toEqual([...places].sort((a, b) => a - b));
   });
 
   it('compares two records on like terms, and reports nothing where nothing changed', () => {

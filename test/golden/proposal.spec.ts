@@ -77,7 +77,7 @@ describe('the parts of a proposal', () => {
   it('say what is proposed, how many rows were judged, and what it does not cover, first', () => {
     const first = squeezed(pages[0]!);
     expect(first).toContain(
-      squeezed('Proposed: the site’s own bank, eight stages, 261 kvar at 400 V, with 7 % reactors.'),
+      squeezed('Judged: the site’s own bank, eight stages, 261 kvar at 400 V, with 7 % reactors.'),
     );
     // Five rows a group: two voltages, the current, both forms of inrush; two of the network. Reactors have no limit.
     expect(first).toContain(squeezed('12 rows judged'));

@@ -196,7 +196,7 @@ describe('the single-line diagram', () => {
 describe('the report for a terminal', () => {
   it('says what is proposed, the verdict in words and every duty', () => {
     const text = resultReport(detuned);
-    expect(text).toContain('Proposed: the site’s own bank, eight stages, 261\u00a0kvar');
+    expect(text).toContain('Judged: the site’s own bank, eight stages, 261\u00a0kvar');
     expect(text).toContain('Verdict: within limits.');
     expect(text).toContain('not judged');
     for (const { name } of detuned.result.duties) expect(text).toContain(name);

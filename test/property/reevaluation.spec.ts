@@ -3,6 +3,7 @@ import { describe, expect, it } from 'vitest';
 import {
   assessBank,
   type BankInput,
+  bankTonight,
   groundOf,
   leastStagesOut,
   likeTerms,
@@ -11,6 +12,7 @@ import {
   type SiteThen,
   UTC_TABLE,
 } from '#libs/engine/index.js';
+import { stagesOutWords, tonightSentences } from '#libs/present/tonight-words.js';
 import { chance } from '../support/chance.js';
 import { driftingLoad, madeRecord } from '../support/made-record.js';
 import { madeSite } from '../support/made-site.js';
@@ -94,6 +96,43 @@ describe('a bank judged again', () => {
     expect(detuned).toMatchObject({ verdict: 'clear', mends: true });
     expect(detuned.effectiveKvar).toBeCloseTo(4 * 50 * (400 / 440) ** 2, 6);
     expect(ids(reevaluation.changes)).toContain('network.voltageDistortionPct');
+  });
+
+  it('says the same first where it is judged by itself, and nothing where it is within limits', () => {
+    const now = then({ bank: PLAIN, loads: DRIVES });
+    const { reevaluation } = reevaluateBank(then({ bank: PLAIN, loads: { distorting: [], backgroundPct: [] } }), now);
+    const alone = bankTonight(now.site, now.record, now.zone);
+    expect(alone).toEqual({ tonight: reevaluation.tonight, stages: reevaluation.stages });
+    const { site, record, zone } = then({ bank: TUNED, loads: DRIVES });
+    expect(tonightSentences(bankTonight(site, record, zone))).toEqual([]);
+  });
+
+  it('does not lay to age what is over its limit as it stands', () => {
+    const said = (loads: Site['loads']) => {
+      const { site, record, zone } = then({ bank: PLAIN, loads });
+      return assessBank(site, record, zone).result.reasons.map(({ code }) => code);
+    };
+    expect(said(DRIVES)).toContain('limit.exceeded');
+    expect(said(DRIVES)).not.toContain('ageing.overLimit');
+  });
+});
+
+describe('the stages to keep out, in words', () => {
+  const entry = (group: number, stage: number | null, count: number, ratedKvar = 50) => ({
+    ...{ group, stage, count, ratedKvar },
+  });
+  const stages = [entry(0, null, 1, 25), entry(1, null, 3), entry(1, 2, 1, 34.5), entry(2, null, 2)];
+
+  it.each([
+    [[0, 0, 1, 0], 'stage 2 of group 2 (34.5 kvar as it measures)'],
+    [[0, 3, 0, 0], 'stages 1, 3 and 4 of group 2 (50.0 kvar each)'],
+    [[0, 2, 0, 0], 'two of stages 1, 3 and 4 of group 2 (50.0 kvar each)'],
+    [[1, 0, 0, 1], 'the stage of group 1 (25.0 kvar) and one of the two stages of group 3 (50.0 kvar each)'],
+    [[0, 0, 0, 2], 'both stages of group 3 (50.0 kvar each)'],
+    [[1, 3, 1, 2], 'the whole bank, all seven stages'],
+    [[0, 0, 0, 0], 'nothing'],
+  ])('are told by the numbers they have on site: %j', (out, said) => {
+    expect(stagesOutWords(out, stages).replaceAll('\u2009', ' ').replaceAll('\u00a0', ' ')).toBe(said);
   });
 });
 

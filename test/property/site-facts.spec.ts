@@ -45,6 +45,18 @@ describe('the table of devices', () => {
     expect(Number(row.value) / duty.value).toBeLessThanOrEqual(1 + rise + 1e-9);
   });
 
+  it('asks for a rated voltage that is enough all the time too, where the rules limit that', () => {
+    // IEC 60831-1: 1.00 U_N without end and 1.10 U_N for hours; 420 V for hours ask for less than 400 V all the time
+    for (const rules of ['iec', 'ieee'] as const) {
+      const result = assessedSite({ rules });
+      const row = result.devices.find(({ device, group }) => device === 'capacitor.voltage' && group === 1)!;
+      const duty = result.duties.find(({ name, group }) => name === 'capacitor voltage, continuous' && group === 1);
+      const forHoursV = Number(row.value) / 1.1;
+      expect(row.least).toBeCloseTo(Math.max(forHoursV, duty?.value ?? 0), 9);
+      expect(Number(row.least) > forHoursV).toBe(rules === 'iec');
+    }
+  });
+
   it.each(['iec', 'ieee'] as const)(
     'asks capacitors under %s for the current and kvar they were judged at, the crest with the rise counted',
     (rules) => {

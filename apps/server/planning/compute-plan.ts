@@ -3,6 +3,8 @@ import {
   assessBank,
   assessEstimate,
   type BankOutcome,
+  type BankTonight,
+  bankTonight,
   type EstimateOutcome,
   type EstimateResult,
   isEstimate,
@@ -58,9 +60,15 @@ export function computePlan({ task, port }: { task: PlanTask; port: MessagePort 
       result: outcome.result,
       proposed: isEstimate(outcome) ? estimateWords(outcome) : proposedWords(outcome),
       rival: rivalSummary(outcome),
-      proposal: await renderProposal(outcome, task.frame),
+      proposal: await renderProposal(outcome, { ...task.frame, tonight: tonightOf(task) }),
     };
   });
+}
+
+/** A bank that stands there and is over a limit comes with what to do at once; such a paper stays a draft. */
+function tonightOf({ kind, site, record, zone }: PlanTask): BankTonight | null {
+  if (kind === 'plan' || record === null || site.bank?.installed !== true) return null;
+  return bankTonight(site, record, zone);
 }
 
 function byRecord(task: PlanTask, record: LoadRecord, watch: Watch): Outcome {

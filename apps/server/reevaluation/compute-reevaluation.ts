@@ -15,7 +15,8 @@ import { portWatch } from '#libs/jobs/pool/port-watch.js';
 import { packAnswer, type WorkerAnswer } from '#libs/jobs/pool/worker-answer.js';
 import type { Language } from '#libs/present/languages.js';
 import { putInWords } from '#libs/present/put-in-words.js';
-import { sinceSentences, tonightSentences } from '#libs/present/reevaluation-words.js';
+import { sinceSentences } from '#libs/present/reevaluation-words.js';
+import { tonightSentences } from '#libs/present/tonight-words.js';
 import { renderProposal } from '#libs/proposal/render-proposal.js';
 import { recordHash } from '../planning/read-file.js';
 

@@ -13,8 +13,8 @@ import {
   reevaluationFinding,
   remedyRows,
   sinceSentences,
-  tonightSentences,
 } from '#libs/present/reevaluation-words.js';
+import { measuredGroupSentences, tonightSentences } from '#libs/present/tonight-words.js';
 import { noPermission, verdictWords } from '#libs/present/verdict-words.js';
 import { siteAddress, stationOfPath } from '../address.js';
 import type { ReevaluationShown, SiteShown } from '../api/shown.js';
@@ -98,6 +98,11 @@ function Changes({ reevaluation, currency }: { reevaluation: Reevaluation; curre
       <p className="caption">
         Need, power factor, cost, operations, distortion and duties; what is not listed is as it was.
       </p>
+      {measuredGroupSentences(reevaluation).map((sentence) => (
+        <p key={sentence} className="caption">
+          {inShownMark(sentence)}
+        </p>
+      ))}
       <RowTable
         name="Changed figures"
         heads={CHANGE_HEADS}

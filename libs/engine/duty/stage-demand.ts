@@ -14,7 +14,9 @@ export interface StageDemand {
   rmsA: number;
   /** sum of the currents of all orders, whose crest the reactor must not saturate at [A] */
   sumA: number;
-  /** rms voltage on the capacitor, line to line, the level's own rise counted [V] */
+  /** fundamental voltage on the capacitor at the nominal bus voltage, line to line [V] */
+  continuousV: number;
+  /** rms voltage on the capacitor at the highest bus voltage, line to line, the level's own rise counted [V] */
   risenV: number;
   /** its crest, the voltages of all orders added, the level's own rise counted [V] */
   risenCrestV: number;
@@ -47,7 +49,7 @@ export function bankDemand(
   levels: Level[],
   site: DutyVoltages & { shortCircuitMinMva: number; rules: RuleSet },
 ): BankDemand {
-  const none = { rmsA: 0, sumA: 0, risenV: 0, risenCrestV: 0, limitedA: 0, kvar: 0 };
+  const none = { rmsA: 0, sumA: 0, continuousV: 0, risenV: 0, risenCrestV: 0, limitedA: 0, kvar: 0 };
   const demand: BankDemand = { groups: bank.groups.map(() => ({ ...none })), reactorLossW: 0 };
   const { currentGrowsWithCapacitance } = CAPACITOR_RULES[site.rules];
   const exponent = model.corners.networks[0]!.path.resistanceExponent;
@@ -65,6 +67,7 @@ export function bankDemand(
       const group = demand.groups[g]!;
       group.rmsA = Math.max(group.rmsA, met.rmsA);
       group.sumA = Math.max(group.sumA, met.sumA);
+      group.continuousV = Math.max(group.continuousV, site.nominalV / (1 - ratio));
       group.risenV = Math.max(group.risenV, met.rmsV);
       group.risenCrestV = Math.max(group.risenCrestV, Math.SQRT2 * met.sumV);
       const growth = currentGrowsWithCapacitance ? flow.corner.corner.capacitanceFactor : 1;
@@ -75,6 +78,20 @@ export function bankDemand(
     demand.reactorLossW = Math.max(demand.reactorLossW, lossW);
   });
   return demand;
+}
+
+/**
+ * The least rated voltage a capacitor may have: for hours at the highest voltage, and all the time at the nominal one where
+ * the rules limit that too.
+ * @param demand of one stage [V]
+ * @param rules rule set
+ * @returns rated voltage, line to line [V]
+ * @source method-devices
+ */
+export function leastRatedV({ risenV, continuousV }: StageDemand, rules: RuleSet): number {
+  const { highestVoltageRatio, continuousVoltageRatio } = CAPACITOR_RULES[rules];
+  const forHoursV = risenV / highestVoltageRatio;
+  return continuousVoltageRatio === null ? forHoursV : Math.max(forHoursV, continuousV / continuousVoltageRatio);
 }
 
 function stageMet(

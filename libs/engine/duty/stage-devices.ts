@@ -6,7 +6,7 @@ import { type DeviceRow, deviceRow } from './device-row.js';
 import type { InrushStage } from './inrush.js';
 import { CAPACITOR_RULES, OVERVOLTAGE_DURATIONS, type RuleSet } from './rules.js';
 import type { SiteFacts } from './site-facts.js';
-import type { BankDemand } from './stage-demand.js';
+import { type BankDemand, leastRatedV } from './stage-demand.js';
 
 /** A fuse for a stage, as a multiple of its rated current; common practice, no source. */
 export const FUSE_RATIO = { low: 1.6, high: 2 } as const;
@@ -55,7 +55,7 @@ function capacitorRows(bank: Bank, g: number, { rules, demand }: StageDeviceBasi
   const group = bank.groups[g]!;
   const { ratedV } = group;
   const limits = CAPACITOR_RULES[rules];
-  const { source, highestVoltageRatio } = limits;
+  const { source } = limits;
   const { risenV, risenCrestV, rmsA, limitedA, kvar } = demand.groups[g]!;
   const standard = { group: g, basis: 'standard', source } as const;
   // Without a limit in the rule set the number is for whoever chooses the rating.
@@ -67,7 +67,7 @@ function capacitorRows(bank: Bank, g: number, { rules, demand }: StageDeviceBasi
       device: 'capacitor.voltage',
       ...standard,
       value: risenV,
-      least: risenV / highestVoltageRatio,
+      least: leastRatedV(demand.groups[g]!, rules),
       unit: 'V',
       fitted: ratedV,
     }),

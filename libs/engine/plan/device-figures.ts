@@ -3,7 +3,8 @@ import { AIR, CAPACITOR_LOSS_W_PER_KVAR, type CabinetHeat } from '../duty/cabine
 import { responseA, smallestKvar } from '../duty/controller-devices.js';
 import type { Devices } from '../duty/devices.js';
 import { FAULT_CURRENT_EDITION, type FaultCurrent } from '../duty/fault-current.js';
-import { CAPACITOR_RULES } from '../duty/rules.js';
+import { CAPACITOR_RULES, type RuleSet } from '../duty/rules.js';
+import { leastRatedV, type StageDemand } from '../duty/stage-demand.js';
 import { LINEAR_RATIO, stageA, stageReactanceOhm, voltageChangePct } from '../duty/stage-devices.js';
 import type { Bank } from '../layout/bank.js';
 import { effectiveKvar, stageOhm } from '../layout/stage.js';
@@ -33,6 +34,22 @@ export function deviceFigures(judged: Judged, bank: Bank, control: Control, equi
   ];
 }
 
+function ratedVoltageFigure(demand: StageDemand, rules: RuleSet, g: number): Figure {
+  const { source, highestVoltageRatio, continuousVoltageRatio } = CAPACITOR_RULES[rules];
+  const value = { value: leastRatedV(demand, rules), unit: 'V' };
+  const forHours = [
+    ['U_C', demand.risenV, 'V'],
+    ['k', highestVoltageRatio, ''],
+  ] as const;
+  const id = `devices.group[${g}].leastRatedV`;
+  if (continuousVoltageRatio === null) return figure(id, value, { formula: 'U_C / k', source }, forHours);
+  return figure(id, value, { formula: 'max(U_C / k, U_1 / m)', source }, [
+    ...forHours,
+    ['U_1', demand.continuousV, 'V'],
+    ['m', continuousVoltageRatio, ''],
+  ]);
+}
+
 function groupFigures(judged: Judged, bank: Bank, g: number, { demand }: Devices): Figure[] {
   const { nominalV, rules, supply, frequencyHz } = judged.site;
   const group = bank.groups[g]!;
@@ -48,15 +65,7 @@ function groupFigures(judged: Judged, bank: Bank, g: number, { demand }: Devices
         ['S_k', shortCircuitMinMva, 'MVA'],
       ],
     ),
-    figure(
-      `devices.group[${g}].leastRatedV`,
-      { value: demand.groups[g]!.risenV / CAPACITOR_RULES[rules].highestVoltageRatio, unit: 'V' },
-      { formula: 'U_C / k', source: CAPACITOR_RULES[rules].source },
-      [
-        ['U_C', demand.groups[g]!.risenV, 'V'],
-        ['k', CAPACITOR_RULES[rules].highestVoltageRatio, ''],
-      ],
-    ),
+    ratedVoltageFigure(demand.groups[g]!, rules, g),
   ];
   if (group.reactorPct > 0) {
     const fundamentalA = stageA(group, nominalV);

@@ -1,9 +1,9 @@
 import type { Ageing } from '../duty/ageing.js';
 import { type DeviceName, type DeviceRow, shortDevices, shortVerdict } from '../duty/device-row.js';
-import type { Duty } from '../duty/duty-row.js';
+import { type Duty, EXCEEDED_RATIO } from '../duty/duty-row.js';
 import type { LimitsPoint } from '../duty/limits-point.js';
 import type { MeasuredCheck } from '../duty/measured-check.js';
-import { graver, type Verdict } from '../duty/rules.js';
+import { CAPACITOR_RULES, graver, type RuleSet, type Verdict } from '../duty/rules.js';
 import type { Bank } from '../layout/bank.js';
 import type { Control } from '../operation/control.js';
 import { type Remark, remark } from '../problem.js';
@@ -50,9 +50,9 @@ export function reasonsBeside(
   const { control, duties } = made;
   return [
     ...shortDevices(beside.devices).map(deviceReason),
-    ...riseReasons(beside.devices, duties),
+    ...riseReasons(beside.devices, duties, judged.site.rules),
     ...measuredReasons(beside.measured, judged.site.facts.measured?.bankKvar ?? 0),
-    ...(bank.groups.length === 0 ? [] : [...ageingReasons(beside.ageing), ...loadReasons(judged, control)]),
+    ...(bank.groups.length === 0 ? [] : [...ageingReasons(beside.ageing, duties), ...loadReasons(judged, control)]),
   ];
 }
 
@@ -60,23 +60,28 @@ export function reasonsBeside(
 const RISEN_DEVICES: readonly DeviceName[] = ['capacitor.voltage', 'capacitor.crest'];
 
 // Within its limit by the highest bus voltage that was entered, over it where the level's own rise is not in that voltage.
-function riseReasons(devices: readonly DeviceRow[], duties: readonly Duty[]): Remark[] {
+function riseReasons(devices: readonly DeviceRow[], duties: readonly Duty[], rules: RuleSet): Remark[] {
   const over = (group: number | null): boolean =>
     duties.some(
       ({ group: of, name, verdict }) => of === group && /, (?:highest|crest)$/.test(name) && verdict === 'avoid',
     );
-  const short = devices.filter(({ device, state }) => RISEN_DEVICES.includes(device) && state === 'short');
+  // what the rise asks for: a rated voltage may have to be higher for the continuous voltage, which has no rise in it
+  const { highestVoltageRatio } = CAPACITOR_RULES[rules];
+  const asked = ({ device, value, least }: DeviceRow): number =>
+    device === 'capacitor.voltage' ? Number(value) / highestVoltageRatio : Number(least);
+  const short = devices.filter(
+    (row) =>
+      RISEN_DEVICES.includes(row.device) && row.state === 'short' && asked(row) / Number(row.fitted) > EXCEEDED_RATIO,
+  );
   const asksMost = (row: DeviceRow): boolean =>
-    short.every(({ group, least }) => group !== row.group || Number(least) <= Number(row.least));
+    short.every((one) => one.group !== row.group || asked(one) <= asked(row));
   return short
     .filter((row) => asksMost(row) && !over(row.group))
-    .map(({ group, fitted, least, unit, source }) =>
-      remark(
-        'device.riseOverLimit',
-        { group: group! + 1, value: fitted!, limit: least! },
-        { unit, source, path: 'bus.highestV' },
-      ),
-    );
+    .map((row) => {
+      const { group, fitted, unit, source } = row;
+      const values = { group: group! + 1, value: fitted!, limit: asked(row) };
+      return remark('device.riseOverLimit', values, { unit, source, path: 'bus.highestV' });
+    });
 }
 
 function deviceReason(row: DeviceRow): Remark {
@@ -109,7 +114,7 @@ function measuredReasons(measured: MeasuredCheck | null, bankKvar: number): Rema
   );
 }
 
-function ageingReasons({ cases, stages }: Ageing): Remark[] {
+function ageingReasons({ cases, stages }: Ageing, duties: readonly Duty[]): Remark[] {
   // What was measured, against the capacitance at which that stage must come out.
   const due = cases.flatMap(({ group, from, capacitanceUf }) => {
     const comesOutUf = group === null ? null : stages[group]!.comesOutUf;
@@ -123,7 +128,8 @@ function ageingReasons({ cases, stages }: Ageing): Remark[] {
       ),
     ];
   });
-  return [...due, ...limitReasons(cases)];
+  // Where a limit is passed as the bank stands, age is not what passes it.
+  return duties.some(({ verdict }) => verdict === 'avoid') ? due : [...due, ...limitReasons(cases)];
 }
 
 function limitReasons(cases: Ageing['cases']): Remark[] {

@@ -1,4 +1,3 @@
-import { shortDevices, shortVerdict } from '../duty/device-row.js';
 import type { Verdict } from '../duty/rules.js';
 import { assessBank } from '../plan/assess-bank.js';
 import type { Outcome } from '../plan/outcome.js';
@@ -12,7 +11,7 @@ import { type Remedy, remedies } from './remedies.js';
 import { type ResultChange, resultChanges } from './result-changes.js';
 import { type SinceWhen, sinceWhen } from './since-when.js';
 import { type SiteAsMeasured, siteAsMeasured } from './site-as-measured.js';
-import { leastStagesOut, type StagesOut } from './stages-out.js';
+import { type MeasuredEntry, measuredEntries, type Tonight, tonightOf } from './tonight.js';
 import { type Ground, groundOf, networkVerdict } from './weigh-stages.js';
 
 /** A site, its record and its clock at one time. */
@@ -20,36 +19,6 @@ export interface SiteThen {
   site: Site;
   record: LoadRecord;
   zone: ZoneTable;
-}
-
-/** A finding that has to be mended before stages go in again. */
-export interface ToMend {
-  /** a duty or a device */
-  kind: 'duty' | 'device';
-  name: string;
-  /** entry of the site's own `bank.stages`, null for the bank as a whole */
-  group: number | null;
-}
-
-/** One entry of the bank as it measures. */
-export interface MeasuredEntry {
-  /** entry of the site's own `bank.stages` */
-  group: number;
-  /** number of a measured stage within it, null for the rest */
-  stage: number | null;
-  count: number;
-  /** as it measures [kvar] */
-  ratedKvar: number;
-}
-
-/** What to do at once with a bank that is over a limit. */
-export interface Tonight {
-  /** least stages out that leave every level within limits */
-  within: StagesOut;
-  /** least stages out that leave nothing over a limit, where that keeps more in */
-  nearLimits: StagesOut | null;
-  /** until these are mended */
-  until: ToMend[];
 }
 
 /** A bank judged again. */
@@ -104,7 +73,7 @@ export function reevaluateBank(before: SiteThen, after: SiteThen, watch?: Watch)
   const inputs = inputChanges(before.site, after.site);
   const newRecord = !sameRecord(before.record, after.record);
   const ground = groundOf(now.site, after.record, after.zone);
-  const tonight = outcome.result.verdict === 'avoid' ? tonightOf(ground, now, outcome) : null;
+  const tonight = outcome.result.verdict === 'avoid' ? tonightOf(ground, now, outcome.result) : null;
   step(0.6);
   const changed = inputs.length > 0 || newRecord;
   return {
@@ -116,7 +85,7 @@ export function reevaluateBank(before: SiteThen, after: SiteThen, watch?: Watch)
         { result: old.result, ofGroup: then.ofGroup },
         { result: outcome.result, ofGroup: now.ofGroup },
       ),
-      stages: entriesOf(now),
+      stages: measuredEntries(now),
       tonight,
       remedies: remediesOf({ ground, now, outcome, tonight }, after.site, before.site),
       since: changed ? sinceWhen(groundOf(then.site, before.record, before.zone), ground) : null,
@@ -125,32 +94,6 @@ export function reevaluateBank(before: SiteThen, after: SiteThen, watch?: Watch)
     before: old,
     after: outcome,
   };
-}
-
-function entriesOf({ site, ofGroup, ofStage }: SiteAsMeasured): MeasuredEntry[] {
-  return site.bank.stages.map(({ count, ratedKvar }, k) => ({
-    group: ofGroup[k]!,
-    stage: ofStage[k]!,
-    count,
-    ratedKvar,
-  }));
-}
-
-function tonightOf(ground: Ground, { site, ofGroup }: SiteAsMeasured, { result }: Outcome): Tonight {
-  const near = leastStagesOut(ground, site.bank, 'watch');
-  const within = near.verdict === 'clear' ? near : leastStagesOut(ground, site.bank, 'clear');
-  const groupOf = (group: number | null): number | null => (group === null ? null : ofGroup[group]!);
-  const found: ToMend[] = [
-    ...result.duties
-      .filter(({ verdict }) => verdict === 'avoid')
-      .map(({ name, group }) => ({ kind: 'duty' as const, name, group: groupOf(group) })),
-    ...shortDevices(result.devices)
-      .filter((row) => shortVerdict(row) === 'avoid')
-      .map(({ device, group }) => ({ kind: 'device' as const, name: device, group: groupOf(group) })),
-  ];
-  const key = ({ kind, name, group }: ToMend): string => `${kind} ${name} ${group}`;
-  const until = found.filter((one, k) => found.findIndex((other) => key(other) === key(one)) === k);
-  return { within, nearLimits: near.stagesOut < within.stagesOut ? near : null, until };
 }
 
 function remediesOf(

@@ -77,6 +77,8 @@ export const GERMAN_BASIS_TEXTS: Readonly<Record<string, string>> = {
   '{0} rows judged: {1} within limits, {2} near a limit, {3} over a limit. {4} not judged.':
     '{0} Prüfungen: {1} innerhalb der Grenzwerte, {2} nahe einem Grenzwert, {3} über einem Grenzwert. {4} nicht beurteilt.',
   'Proposed, {0}': 'Vorgeschlagen, {0}',
+  'Judged, {0}': 'Beurteilt, {0}',
+  'Judged: {0}': 'Beurteilt: {0}',
   'Proposed: {0}': 'Vorgeschlagen: {0}',
   'Does not cover: {0}.': 'Nicht abgedeckt: {0}.',
   '{0} at all {1} levels and in all {2} corners computed':
@@ -95,6 +97,7 @@ export const GERMAN_BASIS_TEXTS: Readonly<Record<string, string>> = {
   'in target': 'im Zielwert',
   'resonance, all in': 'Resonanz, alle ein',
   'order\u00a0{0}': 'Ordnung\u00a0{0}',
+  '{0}: not to stay in service as it stands': '{0}: so nicht in Betrieb zu lassen',
   '{0}: not to be built as it stands': '{0}: so nicht zu bauen',
   '{0}, and an estimate': '{0}, und eine Schätzung',
   'Estimate, no record': 'Schätzung, kein Lastgang',

@@ -48,6 +48,7 @@ export const GERMAN_DEVICE_TEXTS: Readonly<Record<string, string>> = {
   'capacitor, rated voltage': 'Kondensator, Bemessungsspannung',
   '{value} on it at the highest, with the rise of the kvar connected':
     'höchstens {value} am Kondensator, mit Anhebung durch die zugeschalteten kvar',
+  '{least} or more, its continuous voltage counted': 'mindestens {least}, Dauerspannung mitgezählt',
   '{least} or more': 'mindestens {least}',
   'capacitor, crest voltage': 'Kondensator, Scheitelspannung',
   '{value} crest, all orders added, with the rise of the kvar connected':
@@ -70,7 +71,7 @@ export const GERMAN_DEVICE_TEXTS: Readonly<Record<string, string>> = {
   'capacitor, connection': 'Kondensator, Schaltung',
   '[earthing {value}]': '[Erdung {value}]',
   'reactor, thermal current': 'Drossel, thermischer Strom',
-  '{least} or more without end': 'mindestens {least} dauernd',
+  '{least} or more continuous': 'mindestens {least} dauernd',
   'reactor, linearity': 'Drossel, Linearität',
   '{value}, all orders added': '{value}, alle Ordnungen addiert',
   'inductance held to {least}': 'Induktivität bis {least} gehalten',
@@ -184,7 +185,7 @@ export const GERMAN_DEVICE_TEXTS: Readonly<Record<string, string>> = {
   'fuses, set of three': 'Sicherungen, Satz zu drei Stück',
   'discharge resistor, a delta phase': 'Entladewiderstand, je Dreieckstrang',
   '{0} or less{1}': 'höchstens {0}{1}',
-  '{0} without end': '{0} dauernd',
+  '{0} continuous': '{0} dauernd',
   'linear to {0}': 'linear bis {0}',
   '{0} or more': 'mindestens {0}',
   '{0} or more, makes {1} peak': 'mindestens {0}, Einschaltvermögen {1} Scheitelwert',

@@ -13,23 +13,30 @@ export const GERMAN_DOCUMENT_TEXTS: Readonly<Record<string, string>> = {
   duty: 'Beanspruchung',
   what: 'was',
   '{0}, now {1}': '{0}, jetzt {1}',
-  'Tonight: keep out {0}. {1}': 'Heute Nacht: abgeschaltet zu halten: {0}. {1}',
+  'Tonight: keep out {0}. {1}': 'Noch heute abgeschaltet zu halten: {0}. {1}',
   'A qualified person switches them off, secures them against reconnection and waits out their discharge, as the section of cautions says; the controller must not be able to connect them.':
     'Eine Elektrofachkraft schaltet sie ab, sichert sie gegen Wiedereinschalten und wartet ihre Entladung ab, wie der Abschnitt Sicherheitshinweise es verlangt; der Regler darf sie nicht zuschalten können.',
-  'They stay out until {0} {1} been mended and the bank has been judged again.':
-    'Sie bleiben abgeschaltet, bis Folgendes behoben {1}: {0}, und bis die Anlage neu beurteilt ist.',
-  has: 'ist',
-  have: 'ist',
+  'They stay out until the bank is judged again and these are within limits: {0}.':
+    'Sie bleiben abgeschaltet, bis die Anlage neu beurteilt ist und Folgendes innerhalb der Grenzwerte liegt: {0}.',
   'With {0} out nothing is over a limit, though near one: a second best, to be accepted by whoever answers for the installation.':
     'Ist Folgendes abgeschaltet, {0}, so liegt nichts über einem Grenzwert, wenn auch nahe daran: die zweitbeste Lösung, anzunehmen von der für die Anlage verantwortlichen Person.',
   'No stage may stay in.': 'Keine Stufe darf zugeschaltet bleiben.',
   'With what is left, {0}, every level is {1} in every corner.':
     'Mit dem Rest, {0}, liegt jeder Schaltzustand in jedem Eckfall {1}.',
   nothing: 'nichts',
-  '{0} ({1} at the bus)': '{0} ({1} an der Sammelschiene)',
-  'stage {0} of group {1}, {2} as it measures': 'Stufe {0} der Gruppe {1}, {2} wie gemessen',
-  '{0}{1} of group {2}, {3} each': '{0}{1} der Gruppe {2}, je {3}',
-  'all ': 'alle ',
+  '{0}: {1} at the bus': '{0} – {1} an der Sammelschiene',
+  'the whole bank, all {0} stages': 'die ganze Anlage, alle {0} Stufen',
+  'group {0} is {1}': 'Gruppe {0} ist {1}',
+  'Measured stages are judged as they measure, each as a group of its own. Among the figures judged now, {0}.':
+    'Gemessene Stufen werden mit ihren Messwerten beurteilt, jede als eigene Gruppe. In den jetzigen Werten gilt: {0}.',
+  'stage {0} of group {1} ({2} as it measures)': 'Stufe {0} der Gruppe {1} ({2} nach Messung)',
+  'the stage of group {0} ({1})': 'die Stufe der Gruppe {0} ({1})',
+  'both stages of group {0} ({1} each)': 'beide Stufen der Gruppe {0} (je {1})',
+  'all {0} stages of group {1} ({2} each)': 'alle {0} Stufen der Gruppe {1} (je {2})',
+  '{0} of the {1} stages of group {2} ({3} each)': '{0} von {1} Stufen der Gruppe {2} (je {3})',
+  'stage {0} of group {1} ({2})': 'Stufe {0} der Gruppe {1} ({2})',
+  'stages {0} of group {1} ({2} each)': 'Stufen {0} der Gruppe {1} (je {2})',
+  '{0} of {1}': '{0} der {1}',
   '{0} of group {1}': '{0} der Gruppe {1}',
   'what would mend it': 'mögliche Abhilfe',
   'lowest month': 'Monats-Minimum',
@@ -42,6 +49,7 @@ export const GERMAN_DOCUMENT_TEXTS: Readonly<Record<string, string>> = {
   '% reactors': '% verdrosselt',
   'change the set point to {0}': 'Sollwert ändern auf {0}',
   'leave out {0}; {1}': 'weglassen: {0}; {1}',
+  'replace {0} by a new one of {1}; {2}': '{0} durch eine neue mit {1} ersetzen; {2}',
   'replace {0} by new ones of {1}; {2}': '{0} durch neue mit {1} ersetzen; {2}',
   'put back {0} of {1}; {2}': '{0} mit {1} wieder einsetzen; {2}',
   'put back what is gone and replace what has aged, {0} of {1}; {2}':
