@@ -7,6 +7,7 @@ import { LinksAndAnswers1764648000000 } from './1764648000000-links-and-answers.
 import { Reviews1764651600000 } from './1764651600000-reviews.js';
 import { SharedPapers1764655200000 } from './1764655200000-shared-papers.js';
 import { JobNames1764658800000 } from './1764658800000-job-names.js';
+import { PaperForms1764662400000 } from './1764662400000-paper-forms.js';
 
 /** Every change of the schema, oldest first. */
 export const migrations = [
@@ -19,4 +20,5 @@ export const migrations = [
   Reviews1764651600000,
   SharedPapers1764655200000,
   JobNames1764658800000,
+  PaperForms1764662400000,
 ];

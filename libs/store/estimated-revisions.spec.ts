@@ -34,6 +34,7 @@ const revision = (parts: Partial<Revision>): Revision => ({
   createdAt: NOW,
   author: null,
   reason: null,
+  paperForm: null,
   ...parts,
 });
 
@@ -56,8 +57,12 @@ for (const { name, available, create } of databases) {
           `INSERT INTO load_record ("id", "siteId", "hash", "intervalS", "firstS", "endS", "intervalCount", "repaired", "duplicates", "notes", "summary", "quality", "fileHash", "fileBytes", "createdAt")
            VALUES ('c', 's', '${HASH}', 900, 0, 900, 1, 0, 0, '[]', '{}', '{}', '${HASH}', 1, '2026-01-31')`,
         );
-        const added = revision({ recordId: 'c', recordHash: HASH });
-        await insertRevision(manager, { revision: added, proposal: { bytes: Buffer.from('paper'), sha256: HASH } });
+        await manager.query(
+          `INSERT INTO revision ("id", "siteId", "number", "revision", "kind", "recordId", "recordHash", "inputs", "engineVersion", "contentHash", "result", "proposed", "verdict", "createdAt")
+           VALUES ('r1', 's', 'P-0001', 1, 'plan', 'c', '${HASH}', '{}', '0.1.0', '${HASH}', '{"record":null}', 'estimate: no bank.', 'watch', '2026-01-31')`,
+        );
+        await manager.insert(ProposalFile, { revisionId: 'r1', bytes: Buffer.from('paper'), sha256: HASH });
+        await manager.query(`UPDATE site SET "lastRevision" = 1`);
       });
       await before.close();
       const after = new Store({ ...(await openConnections(readAddress(database.url))), queue: null });

@@ -4,12 +4,12 @@ import { Revision } from './revision.js';
 import { StoredRecord } from './stored-record.js';
 
 /**
- * The next revision of the same kind and site that was not withdrawn.
+ * The next revision of the same kind and site that was not withdrawn, and is no draft of the same on another paper.
  * @returns its number, null where there is none
  */
 export async function laterRevision(
   manager: EntityManager,
-  { siteId, kind, revision }: Revision,
+  { siteId, kind, revision, contentHash }: Revision,
 ): Promise<number | null> {
   const later = await manager
     .createQueryBuilder(Revision, 'revision')
@@ -18,6 +18,7 @@ export async function laterRevision(
       ...{ siteId, kind, revision },
     })
     .andWhere("(standing.state IS NULL OR standing.state <> 'withdrawn')")
+    .andWhere("(revision.contentHash <> :contentHash OR standing.state IN ('approved', 'superseded'))", { contentHash })
     .orderBy('revision.revision')
     .getOne();
   return later?.revision ?? null;

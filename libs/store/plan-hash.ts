@@ -9,13 +9,14 @@ import type { Revision } from './revision.js';
  */
 export function planHash(revision: Revision): string {
   const { id, siteId, number, revision: count, kind, recordId, recordHash } = revision;
-  const { inputs, engineVersion, contentHash, result, proposed, rival, verdict, author, reason } = revision;
+  const { inputs, engineVersion, contentHash, result, proposed, rival, verdict, author, reason, paperForm } = revision;
   const createdAt = revision.createdAt.toISOString();
   // Named one by one: a column added later must not change what stands in the log already.
   return sha256(
     canonicalJson({
       ...{ form: 'plan 1', id, siteId, number, revision: count, kind, recordId, recordHash, inputs },
       ...{ engineVersion, contentHash, result, proposed, rival, verdict, createdAt, author, reason },
+      ...(paperForm === null ? {} : { paperForm }),
     }),
   );
 }

@@ -16,11 +16,11 @@ export interface RivalSummary {
 
 /**
  * A plan or an assessment with its frozen inputs: written once, never changed.
- * Equal inputs of one site are one revision, which makes a job that runs twice harmless.
+ * Equal inputs of one site on an equal paper are one revision until it has ended, which makes a job that runs twice harmless.
  */
 @Entity('revision')
 @Index('revision_number', ['siteId', 'revision'], { unique: true })
-@Index('revision_content', ['siteId', 'contentHash'], { unique: true })
+@Index('revision_content', ['siteId', 'contentHash'])
 export class Revision {
   @PrimaryColumn({ type: 'varchar', length: 36 })
   id: string;
@@ -81,4 +81,8 @@ export class Revision {
 
   @Column({ type: 'varchar', length: 2000, nullable: true })
   reason: string | null;
+
+  /** how its paper looks: "Letter de"; null on A4 in English without a logo */
+  @Column({ type: 'varchar', length: 60, nullable: true })
+  paperForm: string | null;
 }

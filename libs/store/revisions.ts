@@ -1,5 +1,6 @@
 import type { EntityManager } from 'typeorm';
 import { ProposalFile } from './proposal-file.js';
+import { ReviewStanding } from './review-standing.js';
 import { Revision } from './revision.js';
 import { StoredSite } from './stored-site.js';
 
@@ -25,16 +26,38 @@ export interface NewRevision {
   proposal: Omit<ProposalFile, 'revisionId'>;
 }
 
+/** What a revision is known by within its site: what it was made from, and how its paper looks. */
+export type RevisionKey = Pick<Revision, 'siteId' | 'contentHash' | 'paperForm'>;
+
+/**
+ * The revision that equal inputs have led to, on an equal paper. One that was withdrawn or superseded stands no more: the
+ * same inputs make the next one.
+ * @returns the latest, null where there is none
+ */
+export function standingRevision(
+  manager: EntityManager,
+  { siteId, contentHash, paperForm }: RevisionKey,
+): Promise<Revision | null> {
+  return manager
+    .createQueryBuilder(Revision, 'revision')
+    .leftJoin(ReviewStanding, 'standing', 'standing.revisionId = revision.id')
+    .where('revision.siteId = :siteId AND revision.contentHash = :contentHash', { siteId, contentHash })
+    .andWhere(paperForm === null ? 'revision.paperForm IS NULL' : 'revision.paperForm = :paperForm', { paperForm })
+    .andWhere("(standing.state IS NULL OR standing.state NOT IN ('withdrawn', 'superseded'))")
+    .orderBy('revision.revision', 'DESC')
+    .getOne();
+}
+
 /**
  * Adds a revision under the number its proposal was made for, if that number is still the next one.
- * Equal inputs of one site are one revision: where it stands already, it is left as it is.
+ * Equal inputs on an equal paper are one revision: where it stands already, it is left as it is.
  * @param manager the write's manager
  * @param added the revision, numbered one above the site's last, and its proposal
  * @returns the revision that stands; null where the number was taken meanwhile or the site is gone
  */
 export async function insertRevision(manager: EntityManager, added: NewRevision): Promise<Revision | null> {
-  const { siteId, contentHash, revision: number } = added.revision;
-  const standing = await manager.findOneBy(Revision, { siteId, contentHash });
+  const { siteId, revision: number } = added.revision;
+  const standing = await standingRevision(manager, added.revision);
   if (standing !== null) return standing;
   const next = { id: siteId, lastRevision: number - 1 };
   const { affected } = await manager.update(StoredSite, next, { lastRevision: number });

@@ -238,6 +238,14 @@ for (const { name, available, create } of usualDatabases) {
         'draft',
         back.body.returned.reason,
       ]);
+      // a revision that has ended stands in the way of nothing: the same inputs make the next
+      expect((await act(2, 'withdraw', REASON)).body.state).toBe('withdrawn');
+      const issuedAnew = await plan();
+      expect([issuedAnew.status, issuedAnew.body.revision]).toEqual([201, 3]);
+      const { contentHash } = next.body;
+      expect(issuedAnew.body).toMatchObject({ contentHash, result: next.body.result });
+      const { body } = await server.ask('GET', `/api/verify?number=${contentHash.slice(0, 16)}`);
+      expect(body.papers.map((one: { state: string }) => one.state)).toEqual(['withdrawn', 'draft']);
     });
 
     it('is approved in the language it was planned in, found by its name where it was altered', async () => {
@@ -246,6 +254,17 @@ for (const { name, available, create } of usualDatabases) {
       const asked = { author: 'R. Aldane', language: 'de' };
       expect((await server.ask('POST', `/api/sites/${siteId}/plans?wait=60`, asked)).status).toBe(201);
       expect(textOf((await server.ask('GET', at(1, '/proposal.pdf'))).body)).toContain('Entwurf, nicht geprüft');
+      // the same in English is a draft of its own, in whose way and out of whose date it does not stand
+      const english = await plan();
+      expect([english.status, english.body.revision]).toEqual([201, 2]);
+      expect(textOf((await server.ask('GET', at(2, '/proposal.pdf'))).body)).toContain('draft, not reviewed');
+      const german = await server.ask('POST', `/api/sites/${siteId}/plans?wait=60`, asked);
+      expect([german.status, german.body.revision, german.body.contentHash]).toEqual([
+        200,
+        1,
+        english.body.contentHash,
+      ]);
+      expect((await review(1)).stale).toBeNull();
       await settle(1);
       const { findings } = await review(1);
       expect((await act(1, 'approve', SIGNED)).status).toBe(200);

@@ -158,7 +158,7 @@ describe('the least stages to keep out', () => {
       const stages = bank.stages.flatMap((stage, g) => (kept[g]! > 0 ? [{ ...stage, count: kept[g]! }] : []));
       if (stages.length === 0) return true;
       const { duties, reasons } = assessBank(madeSite({ bank: { stages }, loads }), RECORD, UTC_TABLE).result;
-      const near = reasons.some(({ code }) => ['peak.near', 'plain.distorting'].includes(code));
+      const near = reasons.some(({ code }) => ['peak.near', 'plain.distortingShare'].includes(code));
       return !near && duties.every(({ verdict }) => verdict === 'clear' || verdict === null);
     });
     const total = (kept: number[]): number => kept.reduce((sum, n) => sum + n, 0);

@@ -50,6 +50,7 @@ export async function storedRevision(store: Store, id: string, count = 1): Promi
       createdAt: NOW,
       author: 'R. Aldane',
       reason: 'first',
+      paperForm: null,
     },
   };
   const bytes = madePaper(revision, 'draft, not reviewed');

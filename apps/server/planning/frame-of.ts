@@ -1,3 +1,4 @@
+import { createHash } from 'node:crypto';
 import type { ProposalFrame } from '#libs/proposal/proposal-frame.js';
 import { Job } from '#libs/store/job.js';
 import type { Revision } from '#libs/store/revision.js';
@@ -37,9 +38,22 @@ export function sheetOf({ paper, language, logo }: Pick<FrozenPlan, 'paper' | 'l
   };
 }
 
+/**
+ * By what papers of equal inputs differ.
+ * @returns "Letter de logo 1f2e3d4c5b6a7980"; null on A4 in English without a logo
+ */
+export function paperFormOf({ paper, language, logo }: Pick<FrozenPlan, 'paper' | 'language' | 'logo'>): string | null {
+  const parts = [
+    ...(paper === undefined || paper === 'A4' ? [] : [paper]),
+    ...(language === undefined || language === 'en' ? [] : [language]),
+    ...(logo === undefined ? [] : [`logo ${createHash('sha256').update(logo).digest('hex').slice(0, 16)}`]),
+  ];
+  return parts.length === 0 ? null : parts.join(' ');
+}
+
 /** Sheet, language and logo a stored revision was asked for with. */
-export async function sheetOfRevision(store: Store, { siteId, revision, contentHash }: Revision): Promise<Sheet> {
-  const made = { siteId, revision, inputHash: contentHash };
+export async function sheetOfRevision(store: Store, { siteId, revision, kind }: Revision): Promise<Sheet> {
+  const made = { siteId, revision, kind };
   const job = await store.read((manager) => manager.findOne(Job, { where: made, order: { id: 'ASC' } }));
   return job === null ? {} : sheetOf(job.request as FrozenPlan);
 }

@@ -13,7 +13,7 @@ import { noSite } from '#libs/store/sites.js';
 import type { Store } from '#libs/store/store.js';
 import { StoredSite } from '#libs/store/stored-site.js';
 import type { PlanTask, PlanValue } from './compute-plan.js';
-import { frameOf, sheetOf } from './frame-of.js';
+import { frameOf, paperFormOf, sheetOf } from './frame-of.js';
 import type { FrozenPlan } from './plan-request.js';
 import { contentOf } from './planning.js';
 
@@ -89,5 +89,6 @@ function numberedRevision(site: StoredSite, frozen: FrozenPlan, content: { text:
     createdAt: new Date(),
     author: frozen.author,
     reason: frozen.reason,
+    paperForm: paperFormOf(frozen),
   };
 }

@@ -10,13 +10,15 @@ import type { Jobs } from '#libs/jobs/jobs.js';
 import type { Person } from '#libs/review/review-act.js';
 import { readLogo } from '#libs/proposal/read-logo.js';
 import type { Job } from '#libs/store/job.js';
-import { Revision } from '#libs/store/revision.js';
+import type { Revision } from '#libs/store/revision.js';
+import { standingRevision } from '#libs/store/revisions.js';
 import { Store } from '#libs/store/store.js';
 import { StoredRecord } from '#libs/store/stored-record.js';
 import type { StoredSite } from '#libs/store/stored-site.js';
 import { siteWithPapers } from '../papers/site-with-papers.js';
 import { findRecord } from '../records/find-record.js';
 import { JOBS } from '../tokens.js';
+import { paperFormOf } from './frame-of.js';
 import type { FrozenPlan } from './plan-request.js';
 
 /** Freezes what a plan is made from and hands it to the jobs. */
@@ -30,7 +32,7 @@ export class Planning {
   /**
    * Asks for a plan or an assessment of the site as it stands now, by its latest record, or its estimate without one.
    * @param by who asks; absent where it is the program itself
-   * @returns the revision where equal inputs have led to one already, else the job that will make it
+   * @returns the revision that equal inputs have led to on an equal paper, else the job that will make it
    * @throws InputProblem where the site, the record or the bank to judge is missing
    */
   async ask(kind: FrozenPlan['kind'], stored: StoredSite, request: PlanRequest, by?: Person): Promise<Revision | Job> {
@@ -67,10 +69,13 @@ export class Planning {
    */
   async make(siteId: string, frozen: FrozenPlan): Promise<Revision | Job> {
     const { hash } = contentOf(frozen);
-    const standing = await this.store.read((manager) => manager.findOneBy(Revision, { siteId, contentHash: hash }));
+    const paperForm = paperFormOf(frozen);
+    const key = { siteId, contentHash: hash, paperForm };
+    const standing = await this.store.read((manager) => standingRevision(manager, key));
     if (standing !== null) return standing;
+    const inputHash = paperForm === null ? hash : createHash('sha256').update(`${hash} ${paperForm}`).digest('hex');
     const { kind } = frozen;
-    return this.jobs.submit({ siteId, kind, inputHash: hash, engineVersion: ENGINE_VERSION, request: frozen });
+    return this.jobs.submit({ siteId, kind, inputHash, engineVersion: ENGINE_VERSION, request: frozen });
   }
 
   /**
