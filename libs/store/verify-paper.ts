@@ -112,8 +112,12 @@ async function namedBy(
       ? []
       : await search()
           .andWhere('revision.contentHash IN (:...contentHashes)', { contentHashes })
+          .orderBy('revision.createdAt')
           .take(MOST_FOUND)
           .getMany();
+  // equal inputs may have led to several revisions: the file names its own
+  const isNamed = ({ number, revision }: Revision): boolean => names.includes(`${number}, revision ${revision}`);
+  byHash.sort((one, other) => Number(isNamed(other)) - Number(isNamed(one)));
   const found = byHash.length > 0 ? byHash : (await Promise.all(names.map((name) => byName(search(), name)))).flat();
   return Promise.all(found.map((revision) => knownPaper(manager, revision, { matched: 'named', sha256: null })));
 }

@@ -265,6 +265,8 @@ for (const { name, available, create } of usualDatabases) {
         english.body.contentHash,
       ]);
       expect((await review(1)).stale).toBeNull();
+      const again = await server.ask('POST', at(1, '/again'), { keep: true });
+      expect([again.status, again.body.revision]).toEqual([200, 1]);
       await settle(1);
       const { findings } = await review(1);
       expect((await act(1, 'approve', SIGNED)).status).toBe(200);

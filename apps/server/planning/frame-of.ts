@@ -51,9 +51,23 @@ export function paperFormOf({ paper, language, logo }: Pick<FrozenPlan, 'paper' 
   return parts.length === 0 ? null : parts.join(' ');
 }
 
-/** Sheet, language and logo a stored revision was asked for with. */
-export async function sheetOfRevision(store: Store, { siteId, revision, kind }: Revision): Promise<Sheet> {
+/** Sheet, language and logo a stored revision was asked for with, as they were asked for. */
+export async function askedSheetOf(
+  store: Store,
+  { siteId, revision, kind }: Revision,
+): Promise<Pick<FrozenPlan, 'paper' | 'language' | 'logo'>> {
   const made = { siteId, revision, kind };
   const job = await store.read((manager) => manager.findOne(Job, { where: made, order: { id: 'ASC' } }));
-  return job === null ? {} : sheetOf(job.request as FrozenPlan);
+  if (job === null) return {};
+  const { paper, language, logo } = job.request as FrozenPlan;
+  return {
+    ...(paper === undefined ? {} : { paper }),
+    ...(language === undefined ? {} : { language }),
+    ...(logo === undefined ? {} : { logo }),
+  };
+}
+
+/** The same, as a paper's frame takes it. */
+export async function sheetOfRevision(store: Store, revision: Revision): Promise<Sheet> {
+  return sheetOf(await askedSheetOf(store, revision));
 }
