@@ -15,6 +15,7 @@ import {
   sinceSentences,
   tonightSentences,
 } from '#libs/present/reevaluation-words.js';
+import { pathWords } from '#libs/present/path-words.js';
 import { noPermission, verdictWords } from '#libs/present/verdict-words.js';
 import { siteAddress, stationOfPath } from '../address.js';
 import type { ReevaluationShown, SiteShown } from '../api/shown.js';
@@ -180,7 +181,7 @@ function Inputs({ reevaluation, siteId }: { reevaluation: Reevaluation; siteId: 
         heads={INPUT_HEADS}
         rows={rows.map(([path = '', before, after]) => [
           <a key={path} href={siteAddress(siteId, stationOfPath(path), { field: path })}>
-            {path}
+            {pathWords(path)}
           </a>,
           before,
           after,
