@@ -47,7 +47,7 @@ function scanOf(what: string, buses: number, limit: number): TwinWork {
     title: `1/|Z|² of ${what} of ${BUSES}, ${LEVELS} levels, ${CORNERS} corners, ${ORDERS} orders, factorised at every point`,
     twin: 'buses',
     limit,
-    runs: 5,
+    runs: { ours: 40, twin: 5 },
     input: twinInput(scene, { buses, corners, ordersH, counts, stageAt }),
     ours: () => {
       const columns: BusColumns[][] = [];

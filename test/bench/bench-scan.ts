@@ -21,7 +21,7 @@ export function scanWork(): TwinWork {
     title: `scan of ${LEVELS} levels, ${CORNERS} corners, ${ORDERS} orders`,
     twin: 'scan',
     limit: 1.5,
-    runs: 40,
+    runs: { ours: 40, twin: 40 },
     input: Float64Array.from([
       ORDERS,
       LEVELS,

@@ -37,7 +37,7 @@ function simulationWork(layout: string, groups: [count: number, ratedKvar: numbe
     title: `year's simulation, ${n} intervals, ${layout}`,
     twin: 'simulate',
     limit: 2,
-    runs: 100,
+    runs: { ours: 100, twin: 100 },
     input: Float64Array.from([
       ...settings,
       ...timing,

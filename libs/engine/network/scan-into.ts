@@ -21,12 +21,12 @@ export function scanEqualStagesInto(
   levelsInto(below, counts, out);
 }
 
-/** |Y₀ + n·y|² = a + n·(b + n·c). */
+/** |Y₀ + n·y|², or the square of another such sum, as a + n·(b + n·c). */
 interface Quadratic {
   a: Float64Array;
   b: Float64Array;
   c: Float64Array;
-  /** Y₀ and y all but cancel somewhere, and rounding could take the square below nothing */
+  /** the two terms all but cancel somewhere, and rounding could take the square below nothing */
   delicate: boolean;
 }
 
@@ -36,16 +36,21 @@ const LEAST_SINE_SQUARE = 1e-12;
 function quadraticInto(bus: ComplexColumn, stage: ComplexColumn, q: Quadratic): void {
   const { re, im } = bus;
   const { re: g, im: s } = stage;
-  const { a, b, c } = q;
   for (let i = 0; i < re.length; i++) {
     const own = re[i]! * re[i]! + im[i]! * im[i]!;
     const cross = 2 * (re[i]! * g[i]! + im[i]! * s[i]!);
-    const each = g[i]! * g[i]! + s[i]! * s[i]!;
-    a[i] = own;
-    b[i] = cross;
-    c[i] = each;
-    if (cross * cross > (1 - LEAST_SINE_SQUARE) * 4 * own * each) q.delicate = true;
+    q.a[i] = own;
+    q.b[i] = cross;
+    q.c[i] = g[i]! * g[i]! + s[i]! * s[i]!;
   }
+  q.delicate = isDelicate(q);
+}
+
+function isDelicate({ a, b, c }: Quadratic): boolean {
+  for (let i = 0; i < a.length; i++) {
+    if (b[i]! * b[i]! > (1 - LEAST_SINE_SQUARE) * 4 * a[i]! * c[i]!) return true;
+  }
+  return false;
 }
 
 /** Levels worked on at once: they share the reading of the tables and one division. */
@@ -190,18 +195,54 @@ function numeratorInto(
     q.b[i] = 2 * (aRe * bRe + aIm * bIm);
     q.c[i] = bRe * bRe + bIm * bIm;
   }
+  q.delicate = isDelicate(q);
 }
 
+/** Quotients worked on at once: they share one division. */
+const QUOTIENTS_AT_ONCE = 4;
+
 // 1/|Z_ii|² = |Y₀ + n·y|²/|Y₀·z_ii + n·y·w|², the former being there already.
-function quotientsInto({ a, b, c }: Quadratic, counts: Float64Array, own: Float64Array, out: Float64Array): void {
-  const m = a.length;
-  for (let level = 0; level < counts.length; level++) {
-    const count = counts[level]!;
-    const offset = level * m;
-    for (let i = 0; i < m; i++) {
-      out[offset + i] = own[offset + i]! / (a[i]! + count * (b[i]! + count * c[i]!));
-    }
+function quotientsInto(q: Quadratic, counts: Float64Array, own: Float64Array, out: Float64Array): void {
+  const m = q.a.length;
+  let level = 0;
+  for (; !q.delicate && level + QUOTIENTS_AT_ONCE <= counts.length; level += QUOTIENTS_AT_ONCE) {
+    fourQuotientsInto(
+      q,
+      counts.subarray(level, level + QUOTIENTS_AT_ONCE),
+      own.subarray(level * m),
+      out.subarray(level * m),
+    );
   }
+  for (; level < counts.length; level++) {
+    oneQuotientInto(q, counts[level]!, own.subarray(level * m), out.subarray(level * m));
+  }
+}
+
+function fourQuotientsInto({ a, b, c }: Quadratic, counts: Float64Array, own: Float64Array, out: Float64Array): void {
+  const m = a.length;
+  const [n0, n1, n2, n3] = [counts[0]!, counts[1]!, counts[2]!, counts[3]!];
+  for (let i = 0; i < m; i++) {
+    const ai = a[i]!;
+    const bi = b[i]!;
+    const ci = c[i]!;
+    const q0 = ai + n0 * (bi + n0 * ci);
+    const q1 = ai + n1 * (bi + n1 * ci);
+    const q2 = ai + n2 * (bi + n2 * ci);
+    const q3 = ai + n3 * (bi + n3 * ci);
+    const first = q0 * q1;
+    const last = q2 * q3;
+    const inverse = 1 / (first * last);
+    const first2 = inverse * last;
+    const last2 = inverse * first;
+    out[i] = own[i]! * (q1 * first2);
+    out[m + i] = own[m + i]! * (q0 * first2);
+    out[2 * m + i] = own[2 * m + i]! * (q3 * last2);
+    out[3 * m + i] = own[3 * m + i]! * (q2 * last2);
+  }
+}
+
+function oneQuotientInto({ a, b, c }: Quadratic, count: number, own: Float64Array, out: Float64Array): void {
+  for (let i = 0; i < a.length; i++) out[i] = own[i]! / (a[i]! + count * (b[i]! + count * c[i]!));
 }
 
 /**
