@@ -185,7 +185,7 @@ function Inputs({ reevaluation, siteId }: { reevaluation: Reevaluation; siteId: 
         heads={INPUT_HEADS}
         rows={rows.map(([path = '', before, after]) => [
           <a key={path} href={siteAddress(siteId, stationOfPath(path), { field: path })}>
-            {path}
+            {pathWords(path)}
           </a>,
           before,
           after,
