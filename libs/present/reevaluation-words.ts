@@ -38,7 +38,7 @@ export const CHANGE_HEADS = words(['what', 'before', 'after', 'limit', 'verdict'
  * @param currency of money's figures, empty where there is none
  * @returns cells, one a head
  */
-export function changeRows({ changes }: Reevaluation, currency: string): string[][] {
+export function changeRows({ changes }: Pick<Reevaluation, 'changes'>, currency: string): string[][] {
   return changes.map((change) => {
     const unit = change.id.startsWith('money.') ? currency : change.unit;
     const digits = change.id === 'operation.monthsBelow' ? 'given' : 'computed';

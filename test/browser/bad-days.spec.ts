@@ -74,7 +74,7 @@ describe.runIf(CHROMIUM !== null)('on a bad day the page', () => {
     const tag = { 'if-match': headers.get('etag')! };
     expect((await server.ask('PUT', `/api/sites/${siteId}`, theirs, tag)).status).toBe(200);
     await page.getByRole('button', { name: 'Compute and keep' }).click();
-    const row = page.getByRole('row', { name: /supply\.faultLevelMva\.min/ });
+    const row = page.getByRole('row', { name: /supply, fault level \(MVA\), least/ });
     expect(await row.textContent()).toContain('111');
     expect(await row.textContent()).toContain('222');
     expect((await server.ask('GET', `/api/sites/${siteId}`)).body.site.supply.faultLevelMva.min).toBe(222);

@@ -90,6 +90,9 @@ ol { padding-left: 32px; }
 li { overflow-wrap: anywhere; }
 .wide th[scope=row] { min-width: 96px; }
 .wide td, .wide th { text-align: left; overflow-wrap: anywhere; vertical-align: top; }
+.scroll { overflow-x: auto; }
+.scroll:focus-visible { outline: 3px solid var(--ink); outline-offset: 3px; }
+.figures td { white-space: nowrap; overflow-wrap: normal; }
 footer { padding-bottom: 32px; }
 details { margin: 12px 0; }
 code { overflow-wrap: anywhere; }

@@ -1,3 +1,6 @@
+import { inShownMark } from '#libs/present/format-number.js';
+import { pathWords } from '#libs/present/path-words.js';
+import { fieldWords } from '#libs/present/review-words.js';
 import { useDesk } from '../desk/use-desk.js';
 
 /** Two versions of one site, side by side, with the fields in which they differ. */
@@ -21,7 +24,7 @@ export function DifferingFields() {
           <tbody>
             {rows.map(([path, mine, other]) => (
               <tr key={path}>
-                <th scope="row">{path}</th>
+                <th scope="row">{pathWords(path)}</th>
                 <td>
                   <b>{mine}</b>
                 </td>
@@ -61,7 +64,6 @@ export function differences(mine: unknown, theirs: unknown, path = ''): [string,
     });
   }
   if (JSON.stringify(mine) === JSON.stringify(theirs)) return [];
-  const text = (value: unknown) =>
-    value === undefined ? 'nothing' : isPart(value) ? JSON.stringify(value) : String(value);
+  const text = (value: unknown) => (value === undefined ? 'nothing' : inShownMark(fieldWords(value)));
   return [[path, text(mine), text(theirs)]];
 }

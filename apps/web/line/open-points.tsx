@@ -21,6 +21,8 @@ interface Point {
   effect: string;
   /** it was assumed, and nobody asks about it */
   isAssumed: boolean;
+  /** the plan cannot be issued with it */
+  blocks: boolean;
 }
 
 /** Everything the plan still rests on, in order of how far each moves the result, each opening its field. */
@@ -28,9 +30,8 @@ export function OpenPoints({ siteId }: { siteId: string }) {
   const { state } = useDesk();
   const [isUnfolded, setUnfolded] = useState(false);
   const result = latestResult(state) ?? keptEstimate(state);
-  const points = result === null ? [] : openPoints(result);
+  const points = result === null ? [] : openPoints(result, String(state.document?.currency ?? ''));
   const most = Math.max(0, ...points.map(({ spread }) => spread ?? 0));
-  const deciding = points.filter(({ effect }) => effect === DECIDES).length;
   return (
     <aside className="rests" aria-label="What this plan still rests on">
       <div className="earth">
@@ -41,9 +42,7 @@ export function OpenPoints({ siteId }: { siteId: string }) {
           <span className="deciding">
             {result === null ? 'nothing computed' : `${points.length} open ${points.length === 1 ? 'point' : 'points'}`}
           </span>
-          <span className="third caption">
-            {most > 0 ? `${deciding === 0 ? 'none' : deciding} could change the verdict` : 'effects not computed yet'}
-          </span>
+          <span className="third caption">{gravestWords(points, most)}</span>
         </div>
         <button
           type="button"
@@ -57,14 +56,25 @@ export function OpenPoints({ siteId }: { siteId: string }) {
       </div>
       <div className={isUnfolded ? 'points unfolded' : 'points'}>
         <p className="caption">
-          {most > 0 ? 'In order of how far each moves the result.' : 'Findings first, then what was assumed.'} Open one
-          to settle it where it is entered.
+          {most > 0
+            ? 'What blocks the issue first, then by how far each moves the result.'
+            : 'Findings first, then what was assumed.'}{' '}
+          Open one to settle it where it is entered.
         </p>
         <PointList points={points.filter((point) => !isQuiet(point))} most={most} siteId={siteId} />
         <QuietPoints points={points.filter(isQuiet)} siteId={siteId} />
       </div>
     </aside>
   );
+}
+
+/** What weighs most, in a few words. */
+function gravestWords(points: readonly Point[], most: number): string {
+  const blocking = points.filter(({ blocks }) => blocks).length;
+  const deciding = points.filter(({ effect }) => effect === DECIDES).length;
+  if (blocking > 0) return `${formatNumber(blocking, 'given')} ${blocking === 1 ? 'blocks' : 'block'} the issue`;
+  if (most === 0) return 'effects not computed yet';
+  return `${deciding === 0 ? 'none' : formatNumber(deciding, 'given')} could change the verdict`;
 }
 
 function PointList({ points, most, siteId }: { points: readonly Point[]; most: number; siteId: string }) {
@@ -90,12 +100,12 @@ function QuietPoints({ points, siteId }: { points: readonly Point[]; siteId: str
 }
 
 function PointRow({ point, most, siteId }: { point: Point; most: number; siteId: string }) {
-  const { text, why, path, station, spread, effect } = point;
-  const share = spread === null || most === 0 ? 0 : Math.max(0.04, spread / most);
+  const { text, why, path, station, spread, effect, blocks } = point;
+  const share = blocks ? 1 : spread === null || most === 0 ? 0 : Math.max(0.04, reachOf(spread) / reachOf(most));
   return (
     <li className="point">
       <div>
-        {spread === null ? (
+        {spread === null && !blocks ? (
           <div className="measure unmeasured" />
         ) : (
           <div className="measure" style={{ width: `${72 * share}px` }} />
@@ -126,8 +136,13 @@ function EarthSymbol() {
 
 const DECIDES = 'Could change the verdict';
 
-/** Reasons, then the record's notes, then assumptions; those with a computed effect by its size. */
-export function openPoints({ reasons, record, assumptions, duties }: Result | EstimateResult): Point[] {
+// A limit overrun eighty times would leave every other bar a dot: a spread of one whole is half the way.
+function reachOf(spread: number): number {
+  return spread / (1 + spread);
+}
+
+/** What blocks the issue, then what has a computed effect by its size, then reasons, the record's notes and assumptions. */
+function openPoints({ reasons, record, assumptions, duties }: Result | EstimateResult, currency: string): Point[] {
   const open = duties.filter(({ verdict }) => verdict === null).length;
   const unjudged: Point[] =
     open === 0
@@ -142,21 +157,22 @@ export function openPoints({ reasons, record, assumptions, duties }: Result | Es
             spread: null,
             effect: '',
             isAssumed: false,
+            blocks: false,
           },
         ];
   const unsettled = reasons.filter(({ code }) => messageOf(code)?.level !== 'information');
   const points = [
-    ...unsettled.map((remark) => pointOf(remark, false)),
+    ...unsettled.map((remark) => pointOf(remark, currency)),
     ...unjudged,
-    ...(record?.notes ?? []).map((remark) => ({ ...pointOf(remark, false), station: 'record' as const })),
-    ...assumptions.map((remark) => pointOf(remark, true)),
+    ...(record?.notes ?? []).map((remark) => ({ ...pointOf(remark, currency), station: 'record' as const })),
+    ...assumptions.map((remark) => ({ ...pointOf(remark, currency), isAssumed: true })),
   ];
   return points
     .map((point, at) => ({ ...point, key: `${at}:${point.key}` }))
-    .sort((a, b) => (b.spread ?? -1) - (a.spread ?? -1));
+    .sort((a, b) => Number(b.blocks) - Number(a.blocks) || (b.spread ?? -1) - (a.spread ?? -1));
 }
 
-function pointOf(remark: Remark, isAssumed: boolean): Point {
+function pointOf(remark: Remark, currency: string): Point {
   const { code, path, text, effect } = remark;
   return {
     key: code,
@@ -165,8 +181,9 @@ function pointOf(remark: Remark, isAssumed: boolean): Point {
     path,
     station: stationOfCode(code),
     spread: effect === null ? null : spreadOf(effect),
-    effect: effect === null ? '' : effect.changesVerdict ? DECIDES : rangeWords(effect),
-    isAssumed,
+    effect: effect === null ? '' : effect.changesVerdict ? DECIDES : rangeWords(effect, currency),
+    isAssumed: false,
+    blocks: messageOf(code)?.level === 'blocks issue',
   };
 }
 
@@ -181,14 +198,15 @@ function spreadOf({ figure, low, high }: NonNullable<Remark['effect']>): number 
   return Math.abs(high - low) / whole;
 }
 
-function rangeWords({ figure, low, high }: NonNullable<Remark['effect']>): string {
+function rangeWords({ figure, low, high }: NonNullable<Remark['effect']>, currency: string): string {
   const duty = /^duties\.(.+)$/.exec(figure)?.[1];
   if (duty !== undefined) {
     const percent = { low: Math.round(100 * low), high: Math.round(100 * high) };
     return `${duty}: ${formatRange(percent, '%')} of its limit`;
   }
   const money = MONEY_FIGURES[figure];
-  if (money !== undefined) return `${money}: ${formatRange({ low: Math.round(low), high: Math.round(high) }, '')}`;
+  if (money !== undefined)
+    return `${money}: ${formatRange({ low: Math.round(low), high: Math.round(high) }, currency)}`;
   if (/kvar$/i.test(figure)) return `± ${formatQuantity(Math.abs(high - low) / 2, 'kvar')}`;
   return formatRange({ low, high }, '', 'computed');
 }

@@ -3,7 +3,7 @@ import { type HeldPapers, type PaperKind, type PaperNamed, paperNamed } from '..
 import { useDesk } from '../desk/use-desk.js';
 import { RowTable } from '../draw/row-table.js';
 import { FieldFrame, refusalOf } from '../field/field-frame.js';
-import { paperRows } from '../papers/paper-rows.js';
+import { paperRows, rowsInWords } from '../papers/paper-rows.js';
 import { usePapers } from '../papers/use-papers.js';
 
 const WORDS: Record<PaperKind, { label: string; own: string; thing: string }> = {
@@ -101,7 +101,7 @@ function Held({ kind, named, held }: { kind: PaperKind; named: PaperNamed; held:
           <RowTable
             name={`${held.name}, version ${held.version}`}
             heads={['field', 'value']}
-            rows={paperRows(held.document)}
+            rows={rowsInWords(paperRows(held.document))}
           />
         </details>
       )}

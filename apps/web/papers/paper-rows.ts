@@ -1,3 +1,5 @@
+import { pathWords } from '#libs/present/path-words.js';
+
 /**
  * A paper's fields, one row each, in the order they stand in.
  * @param part of a document
@@ -13,4 +15,9 @@ export function paperRows(part: unknown, path = ''): [path: string, value: strin
     const step = Array.isArray(part) ? `${path}[${key}]` : path === '' ? key : `${path}.${key}`;
     return paperRows(value, step);
   });
+}
+
+/** The same rows with each field's place in words. */
+export function rowsInWords(rows: readonly [path: string, value: string][]): [field: string, value: string][] {
+  return rows.map(([path, value]) => [pathWords(path), value]);
 }

@@ -5,7 +5,7 @@ import type { PaperShown } from '../api/shown.js';
 import { RowTable } from '../draw/row-table.js';
 import { Head } from '../line/head.js';
 import { NewPaper } from './new-paper.js';
-import { paperRows } from './paper-rows.js';
+import { paperRows, rowsInWords } from './paper-rows.js';
 import { usePapers } from './use-papers.js';
 
 const KINDS: Record<PaperShown['kind'], string> = { tariff: 'tariff', prices: 'price book' };
@@ -83,7 +83,9 @@ function PaperRow({ paper }: { paper: PaperShown }) {
         </button>
         {failure === '' ? null : <span role="alert">{failure}</span>}
       </div>
-      {rows === null ? null : <RowTable name={`${name}, version ${version}`} heads={['field', 'value']} rows={rows} />}
+      {rows === null ? null : (
+        <RowTable name={`${name}, version ${version}`} heads={['field', 'value']} rows={rowsInWords(rows)} />
+      )}
     </li>
   );
 }

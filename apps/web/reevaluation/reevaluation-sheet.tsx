@@ -2,6 +2,7 @@ import { Fragment } from 'react';
 import type { Reevaluation, ResultChange, Verdict } from '#libs/engine/index.js';
 import { factorSince } from '#libs/present/factor-since.js';
 import { formatQuantity, inShownMark } from '#libs/present/format-number.js';
+import { pathWords } from '#libs/present/path-words.js';
 import {
   CHANGE_HEADS,
   changeRows,
@@ -185,7 +186,7 @@ function Inputs({ reevaluation, siteId }: { reevaluation: Reevaluation; siteId: 
         heads={INPUT_HEADS}
         rows={rows.map(([path = '', before, after]) => [
           <a key={path} href={siteAddress(siteId, stationOfPath(path), { field: path })}>
-            {path}
+            {pathWords(path)}
           </a>,
           before,
           after,

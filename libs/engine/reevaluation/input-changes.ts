@@ -1,4 +1,4 @@
-/** A field of the site that is not what it was; a part that came or went is one change. */
+/** A field of the site that is not what it was; a part that came or went is told by its fields. */
 export interface InputChange {
   path: string;
   /** null where it was not given */
@@ -19,31 +19,29 @@ export function inputChanges(before: object, after: object): InputChange[] {
 }
 
 function changesIn(before: unknown, after: unknown, path: string): InputChange[] {
-  if (!isPart(before) || !isPart(after)) {
+  if (!isPart(before) && !isPart(after)) {
     const [was, is] = [plainOf(before), plainOf(after)];
     return was === is ? [] : [{ path, before: was, after: is }];
   }
+  const [was, is] = [partOf(before), partOf(after)];
   const list = Array.isArray(before) || Array.isArray(after);
-  const keys = [...new Set([...Object.keys(before), ...Object.keys(after)])];
+  const keys = [...new Set([...Object.keys(was), ...Object.keys(is)])];
   return keys.flatMap((key) => {
     const place = list ? `${path}[${key}]` : path === '' ? key : `${path}.${key}`;
-    return changesIn(before[key], after[key], place);
+    return changesIn(was[key], is[key], place);
   });
 }
 
+// A list of plain values is one value.
 function isPart(value: unknown): value is Record<string, unknown> {
-  return typeof value === 'object' && value !== null;
+  return typeof value === 'object' && value !== null && !(Array.isArray(value) && !value.some(isPart));
 }
 
-// A whole part reads as its fields.
+function partOf(value: unknown): Record<string, unknown> {
+  return isPart(value) ? value : {};
+}
+
 function plainOf(value: unknown): Plain {
   if (value === undefined || value === null) return null;
-  if (!isPart(value)) return value as string | number | boolean;
-  if (Array.isArray(value)) {
-    return value.some(isPart) ? `${value.length} ${value.length === 1 ? 'entry' : 'entries'}` : value.join('; ');
-  }
-  return Object.entries(value)
-    .filter(([, entry]) => entry !== undefined)
-    .map(([key, entry]) => `${key} ${plainOf(entry)}`)
-    .join(', ');
+  return Array.isArray(value) ? value.join('; ') : (value as string | number | boolean);
 }

@@ -1,0 +1,83 @@
+/** Units that end a key of the site file or of a result, as they are printed; the longest first. */
+const UNITS: readonly (readonly [ending: string, unit: string])[] = [
+  ['PerKwh', 'per kWh'],
+  ['PerUnit', 'per unit'],
+  ['PerYear', 'a year'],
+  ['PerDay', 'a day'],
+  ['WPerKvar', 'W/kvar'],
+  ['PerKvar', 'per kvar'],
+  ['Kvarh', 'kvarh'],
+  ['Kvar', 'kvar'],
+  ['Kwh', 'kWh'],
+  ['Kva', 'kVA'],
+  ['Mva', 'MVA'],
+  ['Ohm', 'Ω'],
+  ['Mm2', 'mm²'],
+  ['Pct', '%'],
+  ['Deg', '°'],
+  ['Kw', 'kW'],
+  ['Kv', 'kV'],
+  ['Ka', 'kA'],
+  ['Hz', 'Hz'],
+  ['Uf', 'µF'],
+  ['Uh', 'µH'],
+  ['H', ''],
+  ['V', 'V'],
+  ['A', 'A'],
+  ['S', 's'],
+  ['W', 'W'],
+  ['C', '°C'],
+];
+
+/** Steps whose words are not those of their key. */
+const STEPS: Readonly<Record<string, string>> = {
+  min: 'least',
+  max: 'greatest',
+  rOverX: 'R/X',
+  xOverR: 'X/R',
+  asOf: 'as of',
+  npv: 'net present value',
+  irrPct: 'internal rate (%)',
+};
+
+/**
+ * Where a field stands, in words.
+ * @param path as in refusals: `bank.stages[0].ratedKvar`
+ * @returns "bank, stages 1, rated (kvar)"; entries are counted from 1
+ */
+export function pathWords(path: string): string {
+  return path.split('.').map(stepWords).join(', ');
+}
+
+function stepWords(step: string): string {
+  const key = step.replace(/\[.*$/, '');
+  const places = [...step.matchAll(/\[(\d+)\]/g)].map(([, at]) => ` ${Number(at) + 1}`).join('');
+  return `${STEPS[key] ?? keyWords(key)}${places}`;
+}
+
+/**
+ * A key in words, its unit in brackets.
+ * @param key `reconnectDelayS`
+ * @returns "reconnect delay (s)"
+ */
+export function keyWords(key: string): string {
+  const ending = UNITS.find(([end]) => key.endsWith(end) && key.length > end.length);
+  const bare = ending === undefined ? key : key.slice(0, -ending[0].length);
+  const spaced = bare.replace(/([a-z\d])([A-Z])/g, '$1 $2').toLowerCase();
+  return ending === undefined || ending[1] === '' ? spaced : `${spaced} (${ending[1]})`;
+}
+
+/**
+ * A value as it is compared: numbers with their digits, a part by its fields in words.
+ * @param value of a JSON document; undefined where there is none
+ * @param shown how a single value is printed
+ * @returns one line
+ */
+export function partWords(value: unknown, shown: (leaf: unknown) => string): string {
+  if (value === null || typeof value !== 'object') return shown(value);
+  if (Array.isArray(value)) return value.map((entry) => partWords(entry, shown)).join('; ');
+  return Object.entries(value)
+    .filter(([, entry]) => entry !== undefined)
+    .map(([key, entry]) => `${STEPS[key] ?? keyWords(key)} ${partWords(entry, shown)}`)
+    .join(', ');
+}
