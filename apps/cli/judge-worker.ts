@@ -7,10 +7,10 @@ import {
   assessBank,
   assessEstimate,
   type BankTonight,
-  bankTonight,
   ENGINE_VERSION,
   type EstimateOutcome,
   type EstimateResult,
+  installedTonight,
   isEstimate,
   type LoadRecord,
   type Outcome,
@@ -61,7 +61,8 @@ export function judgeTask({ task, port }: { task: JudgeTask; port: MessagePort }
   return packAnswer(async () => {
     const watch = portWatch(port);
     const outcome = task.record === null ? byEstimate(task, watch) : byRecord(task, task.record, watch);
-    const tonight = tonightOf(task);
+    // A bank that stands there and is over a limit comes with what to do at once.
+    const tonight = task.kind === 'assess' ? installedTonight(task.site, task.record, task.zone) : null;
     return {
       result: outcome.result,
       report: isEstimate(outcome) ? estimateReport(outcome) : resultReport(outcome, tonight),
@@ -83,12 +84,6 @@ function byEstimate({ kind, site, zone }: JudgeTask, watch: Watch): EstimateOutc
   const judge = kind === 'plan' ? planEstimate : assessEstimate;
   const computed = withRobustness(judge(site, zone), partOfWatch(watch, 0, FIRM));
   return { ...computed, result: putEstimateInWords(computed.result) };
-}
-
-/** A bank that stands there and is over a limit comes with what to do at once. */
-function tonightOf({ kind, site, record, zone }: JudgeTask): BankTonight | null {
-  if (kind === 'plan' || record === null || site.bank?.installed !== true) return null;
-  return bankTonight(site, record, zone);
 }
 
 /** The drawing of papers is loaded only where one is wanted. */

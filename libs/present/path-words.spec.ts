@@ -4,12 +4,14 @@ import { keyWords, partWords, pathWords } from './path-words.js';
 
 describe('the words of a path', () => {
   it.each([
-    ['bank.stages[0].ratedKvar', 'bank, stages 1, rated (kvar)'],
+    ['bank.stages[0].ratedKvar', 'bank, group 1, rated (kvar)'],
     ['supply.faultLevelMva.min', 'supply, fault level (MVA), least'],
     ['control.reconnectDelayS', 'control, reconnect delay (s)'],
     ['loads.backgroundPct[1].orderH', 'loads, background (%) 2, order'],
     ['timeZone', 'time zone'],
-    ['network.levels[12].voltageDistortionPct', 'network, levels 13, voltage distortion (%)'],
+    ['duties[2].name', 'duty 3, name'],
+    ['network.buses[1].name', 'network, bus 2, name'],
+    ['network.levels[12].voltageDistortionPct', 'network, level 13, voltage distortion (%)'],
   ])('says of %s: %s', (path, words) => {
     expect(pathWords(path)).toBe(words);
   });

@@ -40,10 +40,13 @@ const STEPS: Readonly<Record<string, string>> = {
   irrPct: 'internal rate (%)',
 };
 
+/** What one entry of a list is called, where that is not the list's name without its s. */
+const ENTRIES: Readonly<Record<string, string>> = { stages: 'group', buses: 'bus', classes: 'class' };
+
 /**
  * Where a field stands, in words.
  * @param path as in refusals: `bank.stages[0].ratedKvar`
- * @returns "bank, stages 1, rated (kvar)"; entries are counted from 1
+ * @returns "bank, group 1, rated (kvar)"; entries are counted from 1
  */
 export function pathWords(path: string): string {
   return path.split('.').map(stepWords).join(', ');
@@ -52,7 +55,11 @@ export function pathWords(path: string): string {
 function stepWords(step: string): string {
   const key = step.replace(/\[.*$/, '');
   const places = [...step.matchAll(/\[(\d+)\]/g)].map(([, at]) => ` ${Number(at) + 1}`).join('');
-  return `${STEPS[key] ?? keyWords(key)}${places}`;
+  return places === '' ? keyWords(key) : `${ENTRIES[key] ?? entryWords(keyWords(key))}${places}`;
+}
+
+function entryWords(list: string): string {
+  return list.replace(/ies$/, 'y').replace(/([^s])s$/, '$1');
 }
 
 /**
@@ -61,6 +68,7 @@ function stepWords(step: string): string {
  * @returns "reconnect delay (s)"
  */
 export function keyWords(key: string): string {
+  if (STEPS[key] !== undefined) return STEPS[key];
   const ending = UNITS.find(([end]) => key.endsWith(end) && key.length > end.length);
   const bare = ending === undefined ? key : key.slice(0, -ending[0].length);
   const spaced = bare.replace(/([a-z\d])([A-Z])/g, '$1 $2').toLowerCase();
@@ -78,6 +86,6 @@ export function partWords(value: unknown, shown: (leaf: unknown) => string): str
   if (Array.isArray(value)) return value.map((entry) => partWords(entry, shown)).join('; ');
   return Object.entries(value)
     .filter(([, entry]) => entry !== undefined)
-    .map(([key, entry]) => `${STEPS[key] ?? keyWords(key)} ${partWords(entry, shown)}`)
+    .map(([key, entry]) => `${keyWords(key)} ${partWords(entry, shown)}`)
     .join(', ');
 }

@@ -141,7 +141,7 @@ async function chooseSharedTariff(page: Page, server: TestServer): Promise<void>
   await page.getByLabel('the tariff is').selectOption({ label: 'Valley supply, the latest version' });
   await page.getByText('“Valley supply”, version 1, holds from').waitFor();
   await page.getByText('What it says', { exact: true }).click();
-  await page.getByRole('rowheader', { name: 'clauses 1, free ratio' }).waitFor();
+  await page.getByRole('rowheader', { name: 'clause 1, free ratio' }).waitFor();
 }
 
 /** Opens the working of a figure and copies its link; the link alone opens the same working on the same moment. */

@@ -3,10 +3,9 @@ import {
   assessBank,
   assessEstimate,
   type BankOutcome,
-  type BankTonight,
-  bankTonight,
   type EstimateOutcome,
   type EstimateResult,
+  installedTonight,
   isEstimate,
   type LoadRecord,
   type Outcome,
@@ -56,19 +55,15 @@ export function computePlan({ task, port }: { task: PlanTask; port: MessagePort 
   return packAnswer(async () => {
     const { record } = task;
     const outcome = record === null ? byEstimate(task) : byRecord(task, record, portWatch(port));
+    // A bank that stands there and is over a limit comes with what to do at once; such a paper stays a draft.
+    const tonight = task.kind === 'assess' ? installedTonight(task.site, task.record, task.zone) : null;
     return {
       result: outcome.result,
       proposed: isEstimate(outcome) ? estimateWords(outcome) : proposedWords(outcome),
       rival: rivalSummary(outcome),
-      proposal: await renderProposal(outcome, { ...task.frame, tonight: tonightOf(task) }),
+      proposal: await renderProposal(outcome, { ...task.frame, tonight }),
     };
   });
-}
-
-/** A bank that stands there and is over a limit comes with what to do at once; such a paper stays a draft. */
-function tonightOf({ kind, site, record, zone }: PlanTask): BankTonight | null {
-  if (kind === 'plan' || record === null || site.bank?.installed !== true) return null;
-  return bankTonight(site, record, zone);
 }
 
 function byRecord(task: PlanTask, record: LoadRecord, watch: Watch): Outcome {

@@ -77,6 +77,16 @@ describe('the scan of every bus at many levels', () => {
     }
   });
 
+  it('spoils no level beside one at which the other bus is at series resonance without loss', () => {
+    // Z_ii = (Y₀·z_ii + n·y·w)/(Y₀ + n·y) by hand: 0.8 − 0.2·n over j·(0.2·n − 0.4), nothing at n = 4
+    const j = (b: number) => ({ re: Float64Array.of(0), im: Float64Array.of(b) });
+    const levels = Float64Array.from({ length: 8 }, (_, n) => n);
+    const out = new Float64Array(8);
+    scanBusesInto([{ bank: j(-0.4), other: { self: j(2), toBank: j(Math.sqrt(2.5)) } }], j(0.2), levels, out);
+    for (const n of [0, 1, 3, 5, 6, 7]) expect(out[n]).toBeCloseTo(((0.2 * n - 0.4) / (0.8 - 0.2 * n)) ** 2, 12);
+    expect(out[4]).toBeGreaterThan(1e20);
+  });
+
   it('has an end where supply and bank cancel without loss', () => {
     const lossless = (b: number) => ({ re: Float64Array.of(0), im: Float64Array.of(b) });
     const out = new Float64Array(6);

@@ -66,6 +66,19 @@ export function bankTonight(site: Site, record: LoadRecord, zone: ZoneTable): Ba
 }
 
 /**
+ * What to do at once with the site's own bank, where it stands there and a record says what it meets.
+ * @param site validated site
+ * @param record the meter's record, null where there is none
+ * @param zone the site's zone over the record
+ * @returns null for a bank that is not installed, or without a record
+ * @throws InputProblem where inputs contradict each other
+ * @source method-reevaluation
+ */
+export function installedTonight(site: Site, record: LoadRecord | null, zone: ZoneTable): BankTonight | null {
+  return record === null || site.bank?.installed !== true ? null : bankTonight(site, record, zone);
+}
+
+/**
  * Entries of a bank as it measures, by the groups and stages of the site's own.
  * @param measured the site as it measures
  * @returns one a group of the bank as it is judged
