@@ -30,13 +30,13 @@ const WORDS: Record<SettingName, { name: string; derived?: string }> = words({
   nominalVoltage: { name: 'nominal voltage' },
   frequency: { name: 'frequency' },
   overvoltage: {
-    name: 'all stages off above, at the bus',
+    name: 'all stages off at, or lower, at the bus',
     derived: 'least of the groups: permitted voltage for hours, less the reactor’s rise',
   },
   undervoltage: { name: 'on failure of the supply', derived: 'common practice' },
   distortion: { name: 'alarm at a voltage distortion of', derived: 'limit of the bus' },
   temperature: {
-    name: 'all stages off above, air around the capacitors',
+    name: 'all stages off at, or lower, air around the capacitors',
     derived: 'ambient category of the capacitors',
   },
   generator: { name: 'while a generator feeds the board' },

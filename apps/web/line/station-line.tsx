@@ -118,7 +118,8 @@ const FIGURES: Record<Station, (state: DeskState) => { figure: ReactNode; third:
     };
   },
   money: (state) => {
-    const money = latestResult(state)?.money ?? null;
+    const result = latestResult(state);
+    const money = result?.money ?? null;
     if (money === null)
       return {
         figure: 'not priced',
@@ -126,10 +127,10 @@ const FIGURES: Record<Station, (state: DeskState) => { figure: ReactNode; third:
           state.document?.tariff === undefined && state.held.tariff === undefined ? 'no tariff entered' : 'no bank yet',
       };
     const currency = String(state.document?.currency ?? '');
-    return {
-      figure: <Quantity value={headlineSaving(money)} unit={currency} digits="whole" />,
-      third: 'a year, estimated',
-    };
+    const saving = <Quantity value={headlineSaving(money)} unit={currency} digits="whole" />;
+    // The money of a bank over a limit is there to compare, and is no offer.
+    if (result?.verdict === 'avoid') return { figure: <span className="soft">{saving}</span>, third: 'not offered' };
+    return { figure: saving, third: 'a year, estimated' };
   },
   proposal: ({ kept, review }) =>
     kept === null

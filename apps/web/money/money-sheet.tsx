@@ -27,7 +27,8 @@ import { TariffFields } from './tariff-fields.js';
 /** What the bank costs and saves: bills, cash flow, the ways that were weighed, and the papers they rest on. */
 export function MoneySheet() {
   const { state } = useDesk();
-  const money = latestResult(state)?.money ?? null;
+  const result = latestResult(state);
+  const money = result?.money ?? null;
   // The papers as typed; a key that is no value yet is refused at its field, and the figures stay the last ones.
   const papers = moneyPapers(
     (state.document === null ? {} : withHeldPapers(state.document, state.held)) as Pick<
@@ -38,7 +39,11 @@ export function MoneySheet() {
   const currency = papers.currency === '' ? 'amount' : papers.currency;
   return (
     <>
-      {money === null ? <NotPriced papers={papers} /> : <Figures money={money} papers={papers} />}
+      {money === null ? (
+        <NotPriced papers={papers} />
+      ) : (
+        <Figures money={money} papers={papers} isOver={result?.verdict === 'avoid'} />
+      )}
       <TariffFields currency={currency} />
       <BilledFields currency={currency} />
       <PriceFields currency={currency} />
@@ -59,15 +64,20 @@ function NotPriced({ papers }: { papers: MoneyPapers }) {
   );
 }
 
-function Figures({ money, papers }: { money: Money; papers: MoneyPapers }) {
+function savingSentence({ recommended }: Money, saving: string, isOver: boolean): string {
+  if (isOver) return `Over a limit, this bank is not offered. It would save ${saving} a year, ${noGuarantee()}.`;
+  return recommended === 'do nothing'
+    ? `Nothing is to be built for money’s sake; ${noGuarantee()}.`
+    : `The bank saves ${saving} a year, ${noGuarantee()}.`;
+}
+
+function Figures({ money, papers, isOver }: { money: Money; papers: MoneyPapers; isOver: boolean }) {
   const { currency } = papers;
   const saving = formatMoney(headlineSaving(money), currency);
   return (
     <>
       <Headline figures={isPriced(money) ? keyFigures(money, currency) : []}>
-        {money.recommended === 'do nothing'
-          ? `Nothing is to be built for money’s sake; ${noGuarantee()}.`
-          : `The bank saves ${saving} a year, ${noGuarantee()}.`}
+        {savingSentence(money, saving, isOver)}
       </Headline>
       <p className="caption">
         {tariffWords(papers)} {priceBookWords(papers)} {isPriced(money) ? financeWords(papers) : ''}

@@ -92,8 +92,8 @@ function headline({ verdict, bank, duties }: Result, charts: StationCharts['netw
   if (bank.stages.length === 0)
     return `Without a bank the network stands as it is${over === 0 ? '.' : `; ${over} limits are exceeded already.`}`;
   if (verdict === 'clear') return `At all ${levels} and in every corner the bank stays within its limits.${other}`;
-  if (verdict === 'watch') return `No limit is passed at any of ${levels}; at least one is near.${other}`;
-  return `${over === 1 ? 'One limit is' : `${formatNumber(over, 'given')} limits are`} passed by this bank.${other}`;
+  if (verdict === 'watch') return `Over no limit at any of ${levels}, but near at least one.${other}`;
+  return `This bank is over ${over === 1 ? 'one limit' : `${formatNumber(over, 'given')} limits`}.${other}`;
 }
 
 function rivalWords({ name, verdict, margins }: NonNullable<NonNullable<StationCharts['network']>['rival']>): string {
