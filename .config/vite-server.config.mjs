@@ -21,6 +21,7 @@ export default defineConfig({
     minify: false,
     sourcemap: true,
     rolldownOptions: {
+      checks: { pluginTimings: false },
       input: {
         main: `${root}apps/server/main.ts`,
         'planning/planning-worker': `${root}apps/server/planning/planning-worker.ts`,
