@@ -78,7 +78,6 @@ export function NewSite() {
           <label className="way picked-file">
             Add from a site file
             <input
-              className="hidden"
               type="file"
               accept=".json,application/json"
               onChange={({ target }) => void importFile(target.files?.[0])}
