@@ -1,3 +1,4 @@
+import type { EnergyShape } from './energy-reading.js';
 import type { Selection } from './selection.js';
 import { DAY_S, type TariffCalendar } from './tariff-calendar.js';
 
@@ -95,6 +96,17 @@ export class Groupings {
    */
   days(selection: Selection): Grouping {
     return kept(this.#periods, `day ${selection.key}`, () => periods(this.calendar, selection, 'day'));
+  }
+
+  /**
+   * What the energies of a selection are added up of.
+   * @param selection the intervals
+   * @param per length of a period
+   * @returns intervals, periods, hours
+   */
+  energyShape(selection: Selection, per: Period): EnergyShape {
+    const { intervalS, steadyKw } = this.calendar;
+    return { selection, grouping: this.periods(selection, per), hours: intervalS / 3600, steadyKw };
   }
 
   /**
