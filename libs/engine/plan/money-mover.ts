@@ -195,7 +195,11 @@ function keyOf(way: WeighedBank, quantity: TriedQuantity, factor: number): strin
  * @returns their worths, null where the transformers can't carry the load
  * @source method-robustness
  */
-export function underLoad({ study, money }: Scale, ways: readonly WeighedBank[], factor: number): (WorthAgain | null)[] {
+export function underLoad(
+  { study, money }: Scale,
+  ways: readonly WeighedBank[],
+  factor: number,
+): (WorthAgain | null)[] {
   const grown = nullWhereTooLarge(() => scaleOf(grownStudy(study, factor), money));
   if (grown === null) return ways.map(() => null);
   return ways.map((way) => nullWhereTooLarge(() => weighAgain(grown, way, workOn(grown, way.bank, way.control))));

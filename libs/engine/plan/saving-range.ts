@@ -87,7 +87,8 @@ function later(column: Float64Array, first: number): Float64Array {
 function viewInPart(scale: Scale, { control }: WeighedBank): ControllerView {
   const view = viewOn(scale, control);
   const standby = outColumn(scale.study);
-  if (view.standby !== null) for (let i = 0; i < standby.length; i++) standby[i] = Math.max(standby[i]!, view.standby[i]!);
+  if (view.standby !== null)
+    for (let i = 0; i < standby.length; i++) standby[i] = Math.max(standby[i]!, view.standby[i]!);
   return { ...view, standby };
 }
 
