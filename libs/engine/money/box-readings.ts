@@ -1,6 +1,6 @@
 import { DemandBox } from './demand-box.js';
-import { EnergyReading, type EnergyShape } from './energy-reading.js';
-import type { Groupings, Period } from './grouping.js';
+import { EnergyReading } from './energy-reading.js';
+import type { EnergyShape, Groupings, Period } from './grouping.js';
 import type { MeterBox } from './meter-box.js';
 import type { ReactiveBasis } from './papers.js';
 import type { Range } from './range.js';

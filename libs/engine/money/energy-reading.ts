@@ -1,19 +1,7 @@
-import type { Grouping } from './grouping.js';
+import type { EnergyShape } from './grouping.js';
 import type { MeterColumns } from './meter-columns.js';
 import type { ReactiveBasis } from './papers.js';
 import { reactiveOf } from './reactive-basis.js';
-import type { Selection } from './selection.js';
-
-/** What energies are added up of. */
-export interface EnergyShape {
-  selection: Selection;
-  /** periods of the selection, null for whole months */
-  grouping: Grouping | null;
-  /** length of an interval [h] */
-  hours: number;
-  /** the record's own active power, which no bank at its bus moves: its sums are kept; null where there is none [kW] */
-  steadyKw: Float64Array | null;
-}
 
 /**
  * Energies of a selection's intervals in one month, period by period; filled again for each month and meter. A column is

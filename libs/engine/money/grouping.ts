@@ -1,4 +1,3 @@
-import type { EnergyShape } from './energy-reading.js';
 import type { Selection } from './selection.js';
 import { DAY_S, type TariffCalendar } from './tariff-calendar.js';
 
@@ -12,6 +11,17 @@ export interface Grouping {
   single: boolean[];
   /** most groups of a month */
   most: number;
+}
+
+/** What energies are added up of. */
+export interface EnergyShape {
+  selection: Selection;
+  /** periods of the selection, null for whole months */
+  grouping: Grouping | null;
+  /** length of an interval [h] */
+  hours: number;
+  /** the record's own active power, which no bank at its bus moves: its sums are kept; null where there is none [kW] */
+  steadyKw: Float64Array | null;
 }
 
 /** The periods a clause may be formed over. */
