@@ -31,6 +31,7 @@ export const meterMapSchema = z
     voltageBetween: z.enum(['lineToLine', 'lineToNeutral']).optional(),
     quality: z.record(label(40), z.enum(['measured', 'estimated', 'missing'])).optional(),
     dayColumns: z.enum(['clock', 'elapsed']).optional(),
+    fillers: z.enum(['missing', 'values']).optional(),
     keepRow: z.enum(['first', 'last']).optional(),
     overlap: z.enum(['earlier', 'later']).optional(),
   })

@@ -123,6 +123,8 @@ export interface MeterMap {
   quality?: Record<string, QualityMeaning>;
   /** in a file of one row a day: whether its columns follow the clock or the time since midnight where clocks change */
   dayColumns?: 'clock' | 'elapsed';
+  /** numbers such as 9999 or -999 that may stand for a missing value: all of them do, or none */
+  fillers?: 'missing' | 'values';
   /** which of several rows with one stamp and different values counts */
   keepRow?: 'first' | 'last';
   /** which counts where a file that extends a record disagrees with it: the record as it stands, or the file */

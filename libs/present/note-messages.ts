@@ -51,6 +51,10 @@ export const NOTE_MESSAGES: Messages = {
     '{rows:row is|rows are} marked as missing or invalid and were left out.',
     'Missing is not zero; find out why.',
   ),
+  'fillers-left-out': noted(
+    '{values:number|numbers} such as {value} in {columns} stand for missing values and were left out: below zero where nothing else is, or beyond three times anything else.',
+    'Missing is not zero; find out why. If they are values, say so in the map (fillers).',
+  ),
   'qualities-unknown': noted(
     '{rows:row is|rows are} marked {codes}, which is not understood; the values were kept.',
     'Ask what it means, and say it in the map.',
@@ -116,6 +120,7 @@ export const NOTE_MESSAGES: Messages = {
   ),
   'power-factor-in-percent': told('The power factor is written in percent and was divided by 100.'),
   'power-factor-sign-taken': told('The sign of the power factor was read as: {sign}.', 'See that it is so.'),
+  'power-factor-by-words': told('Whether a power factor lags or leads was read from the words beside it: {columns}.'),
   'extremes-taken': noted(
     'By its name {columns} is a greatest or least value; it was read as the mean of the interval.',
     'See that it is one.',

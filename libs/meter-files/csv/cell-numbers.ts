@@ -1,5 +1,6 @@
 import { shown } from '#libs/contract/shown.js';
 import type { RowProblems } from '../row-problems.js';
+import type { CellTails } from './cell-tails.js';
 import type { DecimalMark } from './decimal-mark.js';
 import { type NumberCell, readNumberInto, readNumberText } from './number-cell.js';
 import type { RowCells } from './row-cells.js';
@@ -19,11 +20,18 @@ export interface NumberPlace {
 export class CellNumbers {
   readonly mark: DecimalMark;
   readonly #problems: RowProblems;
+  readonly #tails: CellTails | null;
   readonly #cell: NumberCell = { form: 'missing', value: 0 };
 
-  constructor(mark: DecimalMark, problems: RowProblems) {
+  /**
+   * @param mark the file's decimal mark
+   * @param problems takes what is wrong
+   * @param tails reads what stands behind numbers, where that may be anything
+   */
+  constructor(mark: DecimalMark, problems: RowProblems, tails: CellTails | null = null) {
     this.mark = mark;
     this.#problems = problems;
+    this.#tails = tails;
   }
 
   /**
@@ -39,10 +47,12 @@ export class CellNumbers {
     if (cells.quoting[column] === 2) readNumberText(cells.text(column), cell);
     else readNumberInto(cells.bytes, cells.from[column]!, cells.to[column]!, cell);
     if (cell.form === 'missing') return Number.NaN;
+    const tailed = cell.form === 'wrong' ? (this.#tails?.read(cells.text(column), { column, index }) ?? null) : null;
+    if (tailed !== null) readNumberText(tailed.number, cell);
     if (cell.form === 'wrong') return this.refuse(cells, { column, row }, 'a number', lenient);
     const place = { quoted: cells.quoting[column]! > 0, row, index, k };
     const value = this.mark.numberOf(cell, place);
-    if (!Number.isNaN(value)) return value;
+    if (!Number.isNaN(value)) return tailed?.leads && value !== 0 ? -value : value;
     const asBefore = this.mark.settledAtRow > 0 ? `, as in row ${this.mark.settledAtRow}` : '';
     return this.refuse(
       cells,

@@ -57,5 +57,9 @@ function factorFacts(columns: readonly MeantColumn[], rows: CountedRows): Factor
   // a power factor counts only where no column gives kvar
   if (first === undefined || isWhole(columns)) return null;
   const values = factors.map((column) => inBase({ ...column, values: wholeColumn(column) }, rows.intervalS));
-  return { scale: scaleOf(values, { ...rows, factorColumn: first.column + 1 }), negative: values.map(hasNegative) };
+  const signed = values.map((column, i) => factors[i]!.isSided || hasNegative(column));
+  return {
+    scale: scaleOf(values, { ...rows, factorColumn: first.column + 1 }),
+    signed,
+  };
 }

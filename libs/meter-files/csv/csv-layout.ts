@@ -3,10 +3,12 @@ import { InputProblem, type Problem } from '#libs/engine/index.js';
 import { columnsNamed, namesOf } from './column-candidates.js';
 import { type ColumnChoice, columnChoices } from './column-choice.js';
 import type { CsvView } from './csv-view.js';
+import { isYearCell } from './date-parts.js';
 import { type DayLayout, dayLayout } from './day-layout.js';
 import { daySlots } from './day-slots.js';
 import type { HeaderColumn } from './header-column.js';
 import { headerColumns } from './header-sets.js';
+import { isUnitRow, withCellUnits, withUnit } from './header-units.js';
 import { headerWindows } from './header-windows.js';
 import { readNumberText } from './number-cell.js';
 import { RowCells } from './row-cells.js';
@@ -14,7 +16,6 @@ import { isTextRow } from './row-shape.js';
 import { type SideColumns, sideColumns } from './side-columns.js';
 import { chooseTimeColumns, isDated, isEpoch, isSerial, type TimeColumns } from './time-columns.js';
 import { statedRatios } from './transformer-ratio.js';
-import { readUnit } from './unit-text.js';
 
 /** How the rows of a delimited file are to be read. */
 export interface CsvLayout {
@@ -182,14 +183,17 @@ function namesDay({ cells }: Row): boolean {
 function candidateAt(rows: Row[], index: number, delimiter: number, map: MeterMap): Candidate[] {
   const row = rows[index]!;
   const under = rows[index + 1];
-  const hasUnits = under !== undefined && isUnitRow(under, row);
+  const hasUnits = under !== undefined && mayName(under) && isUnitRow(under.cells, row.cells);
   const names = hasUnits ? row.cells.map((name, column) => withUnit(name, under.cells[column])) : row.cells;
-  const header = headerColumns(names);
+  const data = dataBehind(rows, index + (hasUnits ? 2 : 1));
+  const header = withCellUnits(
+    headerColumns(names),
+    data.map(({ cells }) => cells),
+  );
   const roles = header.filter(({ role }) => role !== null);
   const said = map.headerRow !== undefined || map.columns !== undefined;
   if (!said && !namesDay(row) && (roles.length < 2 || roles.every(({ role }) => role === 'time'))) return [];
   const lastHeaderRow = row.number + (hasUnits ? 1 : 0);
-  const data = dataBehind(rows, index + (hasUnits ? 2 : 1));
   const followed = data[0]?.cells.some((cell, column) => isDatedCell(cell, header[column])) === true;
   const asWide = followed && data[0]!.cells.length === header.length;
   const score = roles.length + (followed ? FOLLOWED : 0) + (asWide ? FOLLOWED : 0);
@@ -197,7 +201,8 @@ function candidateAt(rows: Row[], index: number, delimiter: number, map: MeterMa
 }
 
 function isDatedCell(cell: string, column: HeaderColumn | undefined): boolean {
-  return isDated(cell) !== null || (column?.role === 'time' && (isSerial(cell) || isEpoch(cell)));
+  if (isDated(cell) !== null || isYearCell(cell, column)) return true;
+  return column?.role === 'time' && (isSerial(cell) || isEpoch(cell));
 }
 
 /** The first rows from an index on that hold more than a line of text. */
@@ -207,21 +212,6 @@ function dataBehind(rows: Row[], from: number): Row[] {
     if (rows[i]!.cells.some((cell) => cell !== '') && !isTextRow(rows[i]!.cells)) data.push(rows[i]!);
   }
   return data;
-}
-
-/** A row of units under the names: nothing else in it but words without a number. */
-function isUnitRow(under: Row, names: Row): boolean {
-  if (under.cells.length > names.cells.length + 1) return false;
-  const units = under.cells.filter((cell) => readUnit(bare(cell)) !== null);
-  return units.length > 0 && mayName(under);
-}
-
-function withUnit(name: string, unit: string | undefined): string {
-  return unit === undefined || readUnit(bare(unit)) === null ? name : `${name} [${bare(unit)}]`;
-}
-
-function bare(unit: string): string {
-  return unit.replace(/^[([{<]|[)\]}>]$/g, '').trim();
 }
 
 function layoutOf(found: Candidate, map: MeterMap): CsvLayout {
@@ -276,6 +266,8 @@ function mappedTime(header: readonly HeaderColumn[], map: MeterMap, sample: read
   const beside = clock === undefined ? undefined : columnsNamed(header, clock, 'columns.clock')[0];
   return {
     stamp: at!.index,
+    parts: null,
+    minute: -1,
     clock: beside?.index ?? -1,
     end: -1,
     mark: beside?.mark ?? at!.mark,

@@ -1,7 +1,8 @@
 import type { MeterMap, PowerFactorSign, QualityMeaning } from '#libs/contract/meter-map.js';
 import type { ReadOptions } from '../meter-format.js';
-import type { DateOrder } from '../time/stamp-text.js';
+import type { RowSet } from '../row-set.js';
 import type { CountedClock } from '../time/counted-clock.js';
+import type { DateOrder } from '../time/stamp-text.js';
 import type { StampedRows } from '../time/stamped-rows.js';
 import type { ColumnChoice } from './column-choice.js';
 import type { CsvLayout } from './csv-layout.js';
@@ -23,6 +24,8 @@ export interface CsvMeaning {
   quality: Readonly<Record<string, QualityMeaning>>;
   /** what the columns of a row a day count */
   days: 'clock' | 'elapsed';
+  /** what numbers such as 9999 are that may stand for a missing value; null where there are none */
+  fillers: 'missing' | 'values' | null;
 }
 
 /** The rows of a file as read, before anything is settled. */
@@ -35,6 +38,8 @@ export interface ReadRows {
   readonly texts: SkippedRows;
   /** how a column counts the intervals of a day; null where none does */
   readonly counted: CountedClock | null;
+  /** columns of power factors whose cells say lagging or leading; leading ones are below zero */
+  readonly sided: ReadonlySet<number>;
   /** columns of numbers, counted from 0, in the order of `rows.values` */
   readonly columns: readonly number[];
   /**
@@ -44,10 +49,24 @@ export interface ReadRows {
   valuesOf(column: number): Float64Array;
 }
 
+/** Numbers that may stand for a missing value. */
+export interface FillerNumbers {
+  /** numbers that were taken out of the columns */
+  taken: number;
+  /** as they were first written */
+  value: number;
+  /** the columns they were taken out of, counted from 0 */
+  columns: number[];
+  /** rows of numbers that may be values as well, by column of the rows' values; null where there are none */
+  open: Map<number, RowSet> | null;
+}
+
 /** A file whose rows have been read, before their meaning is settled. */
 export interface CsvFile {
   layout: CsvLayout;
   reader: ReadRows;
   map: MeterMap;
+  /** numbers that may stand for a missing value */
+  fillers: FillerNumbers;
   options: ReadOptions;
 }

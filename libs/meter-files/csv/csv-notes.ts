@@ -25,7 +25,7 @@ export function quantityNotes(
     ...unitNotes(columns, named),
     ...nameNotes(file, columns, named),
     ...sourceNotes(found, meaning, named),
-    ...(found.workedOut === null ? reactiveNotes(file, meaning, built) : workedOutNotes(found, meaning, named)),
+    ...(found.workedOut === null ? reactiveNotes(file, meaning, built) : workedOutNotes(found, file, meaning, named)),
     ...besideNotes(meaning, named),
   ];
 }
@@ -78,15 +78,22 @@ function reactiveNotes({ map }: CsvFile, { choice }: CsvMeaning, { negativeReact
   return has('leading') ? [] : [note('leading-not-recorded', {})];
 }
 
-function workedOutNotes({ workedOut }: CsvSources, meaning: CsvMeaning, named: Named): Remark[] {
+function workedOutNotes({ workedOut }: CsvSources, { reader }: CsvFile, meaning: CsvMeaning, named: Named): Remark[] {
   const from = meaning.choice.columns.filter(({ quantity }) => quantity !== 'connected' && quantity !== 'standby');
   const { unsigned, percent } = workedOut!;
+  const sided = from.filter(({ column }) => reader.sided.has(column)).map(({ column }) => column);
   return [
     note('powers-worked-out', { columns: named(from.map(({ column }) => column)) }),
     ...(percent ? [note('power-factor-in-percent', {})] : []),
     ...(unsigned
       ? [note('reactive-unsigned', {})]
-      : [note('power-factor-sign-taken', { sign: meaning.powerFactorSign })]),
+      : [
+          sided.length > 0
+            ? note('power-factor-by-words', { columns: named(sided) })
+            : note('power-factor-sign-taken', {
+                sign: meaning.powerFactorSign,
+              }),
+        ]),
   ];
 }
 

@@ -86,5 +86,14 @@ function dateColumn(
   const chosen = chooseTimeColumns(beside, sample);
   if (chosen !== null && chosen.clock >= 0) return null;
   const serial = sample.some((row) => isSerial(row[at.index] ?? ''));
-  return { stamp: at.index, clock: -1, end: -1, mark: null, zone: at.zone, serial, epoch: false, counted: false };
+  const plain = { parts: null, minute: -1, epoch: false, counted: false };
+  return {
+    stamp: at.index,
+    clock: -1,
+    end: -1,
+    mark: null,
+    zone: at.zone,
+    serial,
+    ...plain,
+  };
 }

@@ -38,6 +38,7 @@ export class DayRows implements ReadRows {
   readonly totals: SkippedRows = { count: 0, first: 0 };
   readonly texts: SkippedRows = { count: 0, first: 0 };
   readonly counted = null;
+  readonly sided: ReadonlySet<number> = new Set();
   readonly columns: number[] = [];
   /** names of the quantities, in the order in which they came */
   readonly #names: string[] = [];

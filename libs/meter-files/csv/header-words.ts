@@ -59,6 +59,10 @@ export const WORDS = {
   /** names of a column that counts the hours or intervals of a day */
   count:
     'hour hours hora heure stunde uur ora godzina saat he hr period periode periodo interval quarter slot time zeit',
+  year: 'year yr jahr annee ano anno jaar rok ar',
+  month: 'month mon monat mois mes mese maand miesiac mesic',
+  day: 'day tag jour dia giorno dag dzien den',
+  minute: 'minute minutes min minuto minuten minuut minuta',
   neutral:
     'total sum avg average mean net gross main site plant all mittel mittelwert moyenne media meter l ll ln kanal channel',
   begin:

@@ -59,7 +59,7 @@ export class MeterRows {
   close(): { readers: Map<string, RowReader>; meters: number } {
     if (this.#layout.side.meter.length === 0) this.#readers.set('', this.first);
     for (const reader of this.#readers.values()) {
-      reader.stamps.end();
+      reader.end();
       reader.problems.refuse();
     }
     const readers = new Map([...this.#readers].filter(([, { rows }]) => rows.count > 0));

@@ -11,6 +11,8 @@ export interface RawColumn extends QuantityColumn {
 
 /** A column as it was read, and what its numbers are under a meaning: no second column is made of them. */
 export interface MeantColumn extends RawColumn {
+  /** its cells say lagging or leading */
+  isSided: boolean;
   /** no number is another one than was read */
   isAsRead: boolean;
   /** number of a row, NaN where it has none */
@@ -24,13 +26,15 @@ export interface MeantColumn extends RawColumn {
  * @param missing rows whose quality says that they hold no value
  */
 export function meantColumns(
-  { reader }: CsvFile,
-  { choice, decimal }: CsvMeaning,
+  { reader, fillers: { open } }: CsvFile,
+  { choice, decimal, fillers }: CsvMeaning,
   missing: RowSet = new RowSet(),
 ): MeantColumn[] {
   return choice.columns.map((column) => {
     const k = reader.columns.indexOf(column.column);
-    return { ...column, ...meantValues(reader, k, decimal, missing) };
+    const without = [missing, ...(fillers === 'missing' && open?.has(k) ? [open.get(k)!] : [])];
+    const isSided = reader.sided.has(column.column);
+    return { ...column, isSided, ...meantValues(reader, k, decimal, without) };
   });
 }
 
@@ -38,13 +42,18 @@ function meantValues(
   { rows, mark }: Pick<ReadRows, 'rows' | 'mark'>,
   k: number,
   decimal: DecimalSign | null,
-  missing: RowSet,
+  without: readonly RowSet[],
 ): Pick<MeantColumn, 'values' | 'isAsRead' | 'at'> {
   const values = rows.values[k]!.subarray(0, rows.count);
   const divided = (decimal === ',' ? mark.openDots : decimal === '.' ? mark.openCommas : null)?.rows[k];
-  if (divided === undefined && missing.size === 0) return { values, isAsRead: true, at: (row) => values[row]! };
+  if (divided === undefined && without.every(({ size }) => size === 0))
+    return { values, isAsRead: true, at: (row) => values[row]! };
   const number = (row: number) => (divided?.has(row) ? thousands(values[row]!) : values[row]!);
-  return { values, isAsRead: false, at: (row) => (missing.has(row) ? Number.NaN : number(row)) };
+  return {
+    values,
+    isAsRead: false,
+    at: (row) => (without.some((rows) => rows.has(row)) ? Number.NaN : number(row)),
+  };
 }
 
 /**
@@ -65,9 +74,8 @@ export function wholeColumn(column: MeantColumn, room?: Float64Array): Float64Ar
  * @param decimal mark they are read under
  */
 export function valuesUnder(read: Pick<ReadRows, 'rows' | 'mark'>, decimal: DecimalSign | null): Float64Array[] {
-  const missing = new RowSet();
   return read.rows.values.map((_, k) => {
-    const { values, isAsRead, at } = meantValues(read, k, decimal, missing);
+    const { values, isAsRead, at } = meantValues(read, k, decimal, []);
     return isAsRead ? values : values.map((_value, row) => at(row));
   });
 }

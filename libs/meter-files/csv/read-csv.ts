@@ -7,6 +7,7 @@ import { closeReading } from '../record/close-reading.js';
 import { type CsvLayout, findLayout, untoldColumns } from './csv-layout.js';
 import type { CsvFile } from './csv-meaning.js';
 import { DayRows } from './day-rows.js';
+import { fillerNotes, takeFillers } from './filler-numbers.js';
 import { MeterRows } from './meter-rows.js';
 import { QuickRows } from './quick-rows.js';
 import { LONGEST_ROW_BYTES, RowBuffer } from './row-buffer.js';
@@ -33,8 +34,12 @@ export async function readCsv(source: MeterBytes, options: ReadOptions, lane: La
   const file = { layout, map, options };
   const read = layout.days === null ? await meterRead(buffer, file, lane) : await daysRead(buffer, file);
   const result = settleMeaning(read.file);
-  return closeReading({ ...result, notes: [...fileNotes(source, read.file), ...read.notes, ...result.notes] }, map);
+  const { fillers } = read.file;
+  const notes = [...fileNotes(source, read.file), ...read.notes, ...fillerNotes(fillers, read.file.layout)];
+  return closeReading({ ...result, notes: [...notes, ...result.notes] }, map);
 }
+
+type UnreadFile = Omit<CsvFile, 'reader' | 'fillers'>;
 
 interface Read {
   file: CsvFile;
@@ -42,7 +47,7 @@ interface Read {
 }
 
 /** Rows of intervals, of one meter or of several. */
-async function meterRead(buffer: RowBuffer, file: Omit<CsvFile, 'reader'>, lane: Lane): Promise<Read> {
+async function meterRead(buffer: RowBuffer, file: UnreadFile, lane: Lane): Promise<Read> {
   const { layout, map } = file;
   const rows = new MeterRows(layout, map);
   await readRows(buffer, layout, rows, {
@@ -54,11 +59,14 @@ async function meterRead(buffer: RowBuffer, file: Omit<CsvFile, 'reader'>, lane:
   if (reader === undefined || reader.rows.count === 0) refuseEmpty();
   if (readers.size > 1) askWhichMeter(file, readers, meters);
   const notes = map.meter === undefined ? [] : [note('meter-chosen', { meter: map.meter, others: meters - 1 })];
-  return { file: { ...file, reader }, notes };
+  return {
+    file: { ...file, reader, fillers: takeFillers(reader, layout, map) },
+    notes,
+  };
 }
 
 /** A row a day; the rows themselves say what they hold. */
-async function daysRead(buffer: RowBuffer, { layout, map, options }: Omit<CsvFile, 'reader'>): Promise<Read> {
+async function daysRead(buffer: RowBuffer, { layout, map, options }: UnreadFile): Promise<Read> {
   const days = layout.days!;
   const reader = new DayRows(layout, days, map);
   await readRows(buffer, layout, reader, { quickReader: null, sizeBytes: 0 });
@@ -68,7 +76,8 @@ async function daysRead(buffer: RowBuffer, { layout, map, options }: Omit<CsvFil
   ];
   const settled = reader.layoutOf(map);
   if (reader.rows.count === 0) refuseEmpty();
-  return { file: { layout: settled, reader, map, options }, notes };
+  const fillers = takeFillers(reader, settled, map);
+  return { file: { layout: settled, reader, map, options, fillers }, notes };
 }
 
 function refuseEmpty(): never {
@@ -76,12 +85,12 @@ function refuseEmpty(): never {
 }
 
 /** A reading for each meter; a meter that can't be read as the file stands has none. */
-function askWhichMeter(file: Omit<CsvFile, 'reader'>, readers: Map<string, RowReader>, meters: number): never {
+function askWhichMeter(file: UnreadFile, readers: Map<string, RowReader>, meters: number): never {
   const readings: QuestionReading[] = [];
   const room = new ReadingRoom();
   let failed: InputProblem | undefined;
   for (const [meter, reader] of readers) {
-    const first = firstReading({ ...file, reader }, room);
+    const first = firstReading({ ...file, reader, fillers: takeFillers(reader, file.layout, file.map) }, room);
     if (first instanceof InputProblem) failed ??= first;
     else readings.push(first.reading({ meter }));
   }

@@ -1,9 +1,11 @@
 import type { MeterMap } from '#libs/contract/meter-map.js';
 import { shown } from '#libs/contract/shown.js';
 import { RowProblems } from '../row-problems.js';
+import type { RowSet } from '../row-set.js';
 import type { CountedClock } from '../time/counted-clock.js';
 import { StampedRows } from '../time/stamped-rows.js';
 import { CellNumbers } from './cell-numbers.js';
+import { CellTails } from './cell-tails.js';
 import type { CsvLayout } from './csv-layout.js';
 import type { ReadRows } from './csv-meaning.js';
 import { DecimalMark } from './decimal-mark.js';
@@ -37,6 +39,7 @@ export class RowReader implements ReadRows {
   /** columns that only some readings use: a text in one of them may be no fault */
   readonly #lenient: ReadonlySet<number>;
   readonly #numbers: CellNumbers;
+  readonly #tails: CellTails;
   readonly #cell: NumberCell = { form: 'missing', value: 0 };
   #unstamped = 0;
 
@@ -45,7 +48,8 @@ export class RowReader implements ReadRows {
     this.columns = [...new Set(used.map(({ column }) => column))].sort((a, b) => a - b);
     this.rows = new StampedRows(this.columns.length);
     this.mark = new DecimalMark(map.decimal, layout.delimiter);
-    this.#numbers = new CellNumbers(this.mark, this.problems);
+    this.#tails = new CellTails(layout.choices);
+    this.#numbers = new CellNumbers(this.mark, this.problems, this.#tails);
     this.stamps = new RowStamps(this.rows, layout.time, this.problems);
     this.qualities = new RowQualities(layout.side.quality);
     this.#layout = layout;
@@ -61,6 +65,16 @@ export class RowReader implements ReadRows {
     if (time.clock >= 0 || time.serial || time.epoch || this.#standby.size > 0) return null;
     if (side.meter.length + side.quality.length > 0) return null;
     return { delimiter, width: names.length, stamp: time.stamp, end: time.end, columns: this.columns };
+  }
+
+  get sided(): ReadonlySet<number> {
+    return new Set(this.#tails.sides.keys());
+  }
+
+  /** Looks at the rows as a whole, once all are read. */
+  end(): void {
+    this.stamps.end();
+    for (const [column, rows] of this.#tails.sides) this.#refuseOneSided(column, rows);
   }
 
   get counted(): CountedClock | null {
@@ -95,6 +109,22 @@ export class RowReader implements ReadRows {
     this.stamps.keep(index, stamp, cells);
     this.qualities.take(cells, index, rowNumber);
     for (let k = 0; k < this.columns.length; k++) this.rows.values[k]![index] = this.#number(cells, k, index);
+  }
+
+  /** Beside power factors that say their side, one that says none can only be 1. */
+  #refuseOneSided(column: number, sided: RowSet): void {
+    const at = this.valuesOf(column).findIndex(
+      (value, row) => !Number.isNaN(value) && value !== 1 && value !== 100 && value !== 0 && !sided.has(row),
+    );
+    if (at < 0) return;
+    const place = { row: this.rows.rowNumber[at]!, column: column + 1 };
+    const expected = 'a power factor that says lagging or leading, as in other rows';
+    this.problems.add({
+      code: 'bad-number',
+      ...place,
+      expected,
+      found: `${this.valuesOf(column)[at]}`,
+    });
   }
 
   /** Repeated headers, rows of totals and lines of text. */

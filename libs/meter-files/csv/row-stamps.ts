@@ -6,6 +6,7 @@ import { readEpochStamp } from '../time/epoch-stamp.js';
 import { readDayFraction, readSerialStamp } from '../time/serial-dates.js';
 import { datePartsOf, readStamp, type Stamp } from '../time/stamp-text.js';
 import type { StampedRows } from '../time/stamped-rows.js';
+import { type DateParts, dateKeyOf } from './date-parts.js';
 import type { RowCells } from './row-cells.js';
 import type { TimeColumns } from './time-columns.js';
 
@@ -36,12 +37,12 @@ export class RowStamps {
    * @returns the stamp, its clock time null where the cell is a date alone; null where there is none
    */
   read(cells: RowCells): Stamp | null {
-    const { stamp: column, clock } = this.#time;
-    const stamp = this.#stampOf(cells.text(column));
+    const { stamp: column, clock, parts } = this.#time;
+    const stamp = parts === null ? this.#stampOf(cells.text(column)) : dateIn(parts, cells);
     if (clock < 0) {
       return stamp === null || stamp.dateKey === null ? null : stamp;
     }
-    const beside = this.#clockOf(cells.text(clock));
+    const beside = this.#time.minute < 0 ? this.#clockOf(cells.text(clock)) : this.#hourAndMinute(cells);
     if (stamp === null || stamp.dateKey === null || beside === null || beside.clockS === null) return null;
     return { ...beside, dateKey: stamp.dateKey, dateForm: stamp.dateForm };
   }
@@ -135,6 +136,12 @@ export class RowStamps {
     return clockS === null ? readStamp(text) : { ...bare, clockS };
   }
 
+  #hourAndMinute(cells: RowCells): Stamp | null {
+    const [hour, minute] = [cells.text(this.#time.clock), cells.text(this.#time.minute)];
+    if (!/^\d{1,2}$/.test(hour) || !/^\d{1,2}$/.test(minute)) return null;
+    return readStamp(`${hour.padStart(2, '0')}:${minute.padStart(2, '0')}`);
+  }
+
   #refuse(row: number, expected: string, cells: RowCells): void {
     const { stamp, clock } = this.#time;
     const found = [stamp, clock].filter((column) => column >= 0).map((column) => cells.text(column));
@@ -198,6 +205,19 @@ export class RowStamps {
     if (!absolute && (off === 3600 || off === 1800)) return;
     this.#problems.add(mixedIntervals(row, rows.spanS, spanS));
   }
+}
+
+function dateIn(parts: DateParts, cells: RowCells): Stamp | null {
+  const dateKey = dateKeyOf(parts, (column) => cells.text(column));
+  return dateKey === null
+    ? null
+    : {
+        dateKey,
+        dateForm: 'yearFirst',
+        clockS: null,
+        offsetS: null,
+        untilS: null,
+      };
 }
 
 function dayOf(stamp: Stamp): number {

@@ -97,6 +97,7 @@ function openPoints(file: CsvFile): OpenPoints {
     multiplier: map.multiplier === undefined ? [1, ...layout.ratios] : [map.multiplier],
     quality: reader.qualities.readings(map),
     days: dayMeanings(file),
+    fillers: file.fillers.open === null ? [null] : ['missing', 'values'],
   };
 }
 
@@ -117,11 +118,26 @@ function energyMeanings({ layout, reader, map }: CsvFile): CsvMeaning['energy'][
 }
 
 function factorSigns({ layout, reader, map }: CsvFile): PowerFactorSign[] {
+  if (reader.sided.size > 0) return sidedSign(map);
   if (map.powerFactorSign !== undefined) return [map.powerFactorSign];
   const factors = layout.choices.flatMap(({ columns }) =>
     columns.filter(({ quantity }) => quantity === 'powerFactor').map(({ column }) => column),
   );
   return factors.some((column) => hasNegative(reader.valuesOf(column))) ? [...POWER_FACTOR_SIGNS] : ['negativeLeads'];
+}
+
+/** Where cells say lagging and leading, a sign has nothing left to say. */
+function sidedSign({ powerFactorSign = 'negativeLeads' }: MeterMap): PowerFactorSign[] {
+  if (powerFactorSign === 'negativeLeads') return [powerFactorSign];
+  const expected = 'none: the cells say lagging or leading';
+  throw new InputProblem([
+    {
+      code: 'out-of-range',
+      path: 'powerFactorSign',
+      expected,
+      found: powerFactorSign,
+    },
+  ]);
 }
 
 function settledAmong(file: CsvFile, points: OpenPoints, room: ReadingRoom): ReadResult {
@@ -198,7 +214,14 @@ const ASKED: Record<Point, { id: string; about: string }> = {
     id: 'dayColumns',
     about: 'whether the columns of a day follow the clock or count the time since midnight where clocks change',
   },
-  quality: { id: 'quality', about: 'whether values of this quality are measured or missing' },
+  fillers: {
+    id: 'fillers',
+    about: 'whether numbers such as 9999 or -999 are values or stand for missing ones',
+  },
+  quality: {
+    id: 'quality',
+    about: 'whether values of this quality are measured or missing',
+  },
 };
 
 function mapOf(point: Point, meaning: CsvMeaning): MeterMap {
@@ -219,6 +242,8 @@ function mapOf(point: Point, meaning: CsvMeaning): MeterMap {
       return { multiplier: meaning.multiplier };
     case 'days':
       return { dayColumns: meaning.days };
+    case 'fillers':
+      return meaning.fillers === null ? {} : { fillers: meaning.fillers };
     case 'quality':
       return { quality: { ...meaning.quality } };
   }

@@ -1,6 +1,7 @@
+import { readEpochStamp } from '../time/epoch-stamp.js';
 import { readDayFraction, readSerialStamp } from '../time/serial-dates.js';
 import { type DateForm, readStamp } from '../time/stamp-text.js';
-import { readEpochStamp } from '../time/epoch-stamp.js';
+import { type DateParts, datePartColumns, minuteColumn } from './date-parts.js';
 import type { HeaderColumn } from './header-column.js';
 import { says, wordsOf } from './header-words.js';
 
@@ -8,8 +9,12 @@ import { says, wordsOf } from './header-words.js';
 export interface TimeColumns {
   /** column of the stamp, or of the date where `clock` is given; counted from 0 */
   stamp: number;
+  /** where year, month and day stand in columns of their own; `stamp` is then that of the year */
+  parts: DateParts | null;
   /** column of the clock time beside a date, or −1 */
   clock: number;
+  /** column of minutes beside one of hours, which `clock` is then; or −1 */
+  minute: number;
   /** column of the interval's end beside its begin, stamp or clock time as the begin is, or −1 */
   end: number;
   /** which end of the interval the words say the stamp marks */
@@ -98,7 +103,12 @@ export function chooseTimeColumns(columns: readonly HeaderColumn[], rows: readon
   const named = columns.filter(({ role }) => role === 'time');
   const unused = columns.filter(({ role }) => role === null || role === 'time');
   const counting = unused.filter((column) => countsIntervals(column, rows));
-  return chosen(named, held, counting) ?? chosen(unused, held, counting) ?? chosenUnread(named, rows);
+  return (
+    chosen(named, held, counting) ??
+    chosen(unused, held, counting) ??
+    inParts(columns, rows, held) ??
+    chosenUnread(named, rows)
+  );
 }
 
 /** A column named for the hours or intervals of a day that holds whole numbers. */
@@ -151,6 +161,8 @@ function chosen(
 function rest(found: { at: HeaderColumn; end: HeaderColumn | null }, date: HeaderColumn | null, serial: boolean) {
   return {
     serial,
+    parts: null,
+    minute: -1,
     epoch: false,
     counted: false,
     end: found.end?.index ?? -1,
@@ -165,6 +177,32 @@ function beginAndEnd(columns: HeaderColumn[]): { at: HeaderColumn; end: HeaderCo
   if (begin !== undefined) return { at: begin, end: end ?? null };
   const at = end ?? columns[0];
   return at === undefined ? null : { at, end: null };
+}
+
+/** Year, month and day apart, beside a clock time, hours and minutes, or a column that counts. */
+function inParts(
+  columns: readonly HeaderColumn[],
+  rows: readonly string[][],
+  held: Map<HeaderColumn, TimeContent>,
+): TimeColumns | null {
+  const parts = datePartColumns(columns, rows);
+  if (parts === null) return null;
+  const dates = new Set(Object.values(parts));
+  const beside = columns.filter(({ index }) => !dates.has(index));
+  const clocks = beginAndEnd(beside.filter((column) => held.get(column) === 'clock'));
+  const at = { stamp: parts.year, parts };
+  if (clocks !== null) return { ...rest(clocks, null, false), ...at, clock: clocks.at.index };
+  const minute = minuteColumn(beside);
+  const hours = beginAndEnd(beside.filter((column) => column.index !== minute && countsIntervals(column, rows)));
+  if (hours === null) return null;
+  return {
+    ...rest(hours, null, false),
+    ...at,
+    clock: hours.at.index,
+    end: -1,
+    minute,
+    counted: minute < 0,
+  };
 }
 
 /** A column named for its stamps whose first cells can't be read: its rows are then refused one by one. */

@@ -32,8 +32,8 @@ export interface PowerRules {
 export interface FactorFacts {
   /** what they are divided by */
   scale: 1 | 100;
-  /** of each, whether any of its numbers is below zero */
-  negative: readonly boolean[];
+  /** of each, whether its numbers tell lagging from leading: any is below zero, or their cells say it */
+  signed: readonly boolean[];
 }
 
 /** Powers worked out, one a row; NaN where a row does not give them. */
@@ -60,15 +60,20 @@ const MOST_PROBLEMS = 20;
  * @throws InputProblem where a kVA is less than its kW, naming row and column
  */
 export function workedOutPowers(measured: MeasuredPowers, rules: PowerRules): WorkedOutPowers {
-  const { scale, negative } = rules.factor ?? { scale: 1, negative: [] };
+  const { scale, signed: signs } = rules.factor ?? { scale: 1, signed: [] };
   const phases = phasesOf(measured, rules, scale);
   const total = roomFor(phases, rules);
   const slackKva = rules.slackKva ?? phases.map((phase) => slackOf(phase, rules));
   const problems = phases.flatMap((phase, i) => shortRows(phase, slackKva[i]!, rules)).slice(0, MOST_PROBLEMS);
   if (problems.length > 0) throw new InputProblem(problems);
   for (const [i, phase] of phases.entries()) addPhaseInto(total, phase, { ...rules, first: i === 0 });
-  const signed = phases.some(({ lambda }, phase) => lambda !== null && negative[phase]);
-  return { ...total, unsigned: !signed || rules.sign === 'negativeExports', percent: scale !== 1, slackKva };
+  const signed = phases.some(({ lambda }, phase) => lambda !== null && signs[phase]);
+  return {
+    ...total,
+    unsigned: !signed || rules.sign === 'negativeExports',
+    percent: scale !== 1,
+    slackKva,
+  };
 }
 
 /** Columns of one phase, or of all three together; without `s` there is `p`. */

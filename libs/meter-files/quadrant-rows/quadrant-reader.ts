@@ -27,7 +27,16 @@ export class QuadrantReader {
   constructor(map: MeterMap) {
     this.mark = new DecimalMark(map.decimal, SEMICOLON);
     this.#numbers = new CellNumbers(this.mark, this.#problems);
-    const beginning = { stamp: 0, clock: -1, end: -1, serial: false, epoch: false, counted: false };
+    const beginning = {
+      stamp: 0,
+      clock: -1,
+      end: -1,
+      serial: false,
+      parts: null,
+      minute: -1,
+      epoch: false,
+      counted: false,
+    };
     const time = { ...beginning, mark: map.stamp ?? null, zone: null };
     this.#stamps = new RowStamps(this.rows, time, this.#problems);
   }

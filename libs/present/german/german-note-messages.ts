@@ -46,6 +46,10 @@ export const GERMAN_NOTE_MESSAGES: Readonly<Record<string, Translation>> = {
     '{rows:Zeile ist|Zeilen sind} als fehlend oder ungültig gekennzeichnet und wurden ausgelassen.',
     'Fehlend ist nicht null; die Ursache feststellen.',
   ),
+  'fillers-left-out': said(
+    '{values:Zahl|Zahlen} wie {value} in {columns} stehen für fehlende Werte und wurden ausgelassen: unter null, wo sonst nichts unter null ist, oder über dem Dreifachen von allem anderen.',
+    'Fehlend ist nicht null; die Ursache feststellen. Sind es Werte, dies in der Zuordnung angeben (fillers).',
+  ),
   'qualities-unknown': said(
     '{rows:Zeile ist|Zeilen sind} mit {codes} gekennzeichnet, was nicht verstanden wird; die Werte wurden behalten.',
     'Fragen, was es bedeutet, und es in der Zuordnung angeben.',
@@ -116,6 +120,9 @@ export const GERMAN_NOTE_MESSAGES: Readonly<Record<string, Translation>> = {
   'power-factor-sign-taken': said(
     'Das Vorzeichen des Leistungsfaktors wurde gelesen als: {sign}.',
     'Prüfen, ob es so ist.',
+  ),
+  'power-factor-by-words': said(
+    'Ob ein Leistungsfaktor induktiv oder kapazitiv ist, wurde aus den Wörtern daneben gelesen: {columns}.',
   ),
   'extremes-taken': said(
     'Dem Namen nach ist {columns} ein Höchst- oder Kleinstwert; es wurde als Mittel des Intervalls gelesen.',

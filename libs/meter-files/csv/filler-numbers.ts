@@ -1,0 +1,90 @@
+import type { MeterMap } from '#libs/contract/meter-map.js';
+import type { Remark } from '#libs/engine/index.js';
+import { note } from '../note.js';
+import { RowSet } from '../row-set.js';
+import type { CsvLayout } from './csv-layout.js';
+import type { FillerNumbers, ReadRows } from './csv-meaning.js';
+
+/** Numbers that programs write where they have none: nines, and the ends of whole numbers of 16 and 32 bits. */
+const FILLERS = new Set([
+  999, 9999, 99_999, 999_999, 9_999_999, 99_999_999, 999_999_999, 9_999_999_999, 999.9, 999.99, 9999.9, 9999.99,
+  99_999.9, 99_999.99, 32_767, 32_768, 65_535, 2_147_483_647, 2_147_483_648, 4_294_967_295,
+]);
+const LEAST = 999;
+/** A number so many times as large as any other of its column is none of it. */
+const FAR_TIMES = 3;
+/** As near to the one before or behind it, a number goes on as its column does. */
+const NEAR_RATIO = 0.2;
+
+/**
+ * Takes out numbers that stand for a missing value: below zero where nothing else of the column is, or beyond three times
+ * anything else. One that is neither, and has no neighbour like it, stays and has to be asked about.
+ * @param reader rows as read; what is taken out becomes NaN
+ * @param layout its columns
+ * @param map what a person says
+ */
+export function takeFillers(reader: ReadRows, layout: CsvLayout, { fillers }: MeterMap): FillerNumbers {
+  const found: FillerNumbers = { taken: 0, value: 0, columns: [], open: null };
+  const used = new Set(layout.choices.flatMap(({ columns }) => columns.map(({ column }) => column)));
+  if (fillers === 'values') return found;
+  for (const [k, column] of reader.columns.entries()) {
+    const values = reader.rows.values[k]!.subarray(0, reader.rows.count);
+    if (!used.has(column) || !values.some(isFiller)) continue;
+    const before = found.taken;
+    const open = takeFrom(values, found, fillers === 'missing');
+    if (open.size > 0) found.open = (found.open ?? new Map<number, RowSet>()).set(k, open);
+    if (found.taken > before) found.columns.push(column);
+  }
+  return found;
+}
+
+/**
+ * What is worth saying of them.
+ * @param found what was taken out
+ * @param layout names of the columns
+ */
+export function fillerNotes({ taken, value, columns }: FillerNumbers, { names }: CsvLayout): Remark[] {
+  if (taken === 0) return [];
+  const listed = columns.map((column) => names[column] || `column ${column + 1}`).join(', ');
+  return [note('fillers-left-out', { values: taken, value, columns: listed })];
+}
+
+function isFiller(value: number): boolean {
+  return (value >= LEAST || value <= -LEAST) && FILLERS.has(Math.abs(value));
+}
+
+function takeFrom(values: Float64Array, found: FillerNumbers, all: boolean): RowSet {
+  const open = new RowSet();
+  const { least, most } = rangeOf(values);
+  for (let row = 0; row < values.length; row++) {
+    const value = values[row]!;
+    if (!isFiller(value)) continue;
+    const below = value < 0 && !(least < 0);
+    const far = Math.abs(value) > FAR_TIMES * Math.max(most, -least);
+    if (below || far || all) {
+      if (found.taken++ === 0) found.value = value;
+      values[row] = Number.NaN;
+    } else if (!goesOn(values, row)) open.add(row);
+  }
+  return open;
+}
+
+/** Least and greatest of the other numbers; both 0 where there are none but zeros. */
+function rangeOf(values: Float64Array): { least: number; most: number } {
+  let [least, most] = [0, 0];
+  for (const value of values) {
+    if (isFiller(value)) continue;
+    if (value < least) least = value;
+    if (value > most) most = value;
+  }
+  return { least, most };
+}
+
+/** Whether the nearest number on either side that is no such number itself is about as large. */
+function goesOn(values: Float64Array, row: number): boolean {
+  const value = values[row]!;
+  return [-1, 1].some((step) => {
+    const beside = values[row + step] ?? Number.NaN;
+    return !isFiller(beside) && Math.abs(beside - value) <= NEAR_RATIO * Math.abs(value);
+  });
+}
