@@ -40,17 +40,19 @@ describe('the words of a path', () => {
   });
 });
 
+const LIST = '"type":"array","items":{"type":"object"';
+
 /** Keys of the site file and its codes, from the schema itself. */
 function partsOfSite(): { keys: Set<string>; lists: Set<string>; codes: Set<string> } {
   const found = { keys: new Set<string>(), lists: new Set<string>(), codes: new Set<string>() };
   const visit = (node: unknown): void => {
     if (node === null || typeof node !== 'object') return;
     const { properties, enum: codes } = node as { properties?: object; enum?: unknown[] };
-    for (const [key, value] of Object.entries(properties ?? {})) {
-      found.keys.add(key);
-      if (JSON.stringify(value).includes('"type":"array","items":{"type":"object"')) found.lists.add(key);
-    }
-    for (const code of codes ?? []) if (/^[a-z]{2}/.test(String(code))) found.codes.add(String(code));
+    const named = Object.entries(properties ?? {});
+    const lists = named.filter(([, value]) => JSON.stringify(value).includes(LIST));
+    for (const [key] of named) found.keys.add(key);
+    for (const [key] of lists) found.lists.add(key);
+    for (const code of (codes ?? []).map(String).filter((one) => /^[a-z]{2}/.test(one))) found.codes.add(code);
     for (const value of Object.values(node)) visit(value);
   };
   visit(z.toJSONSchema(siteSchema, { unrepresentable: 'any', io: 'input' }));

@@ -61,7 +61,12 @@ const STEPS: Readonly<Record<string, string>> = {
 };
 
 /** What one entry of a list is called, where that is not the list's name without its s. */
-const ENTRIES: Readonly<Record<string, string>> = { stages: 'group', buses: 'bus', classes: 'class', switches: 'switch' };
+const ENTRIES: Readonly<Record<string, string>> = {
+  stages: 'group',
+  buses: 'bus',
+  classes: 'class',
+  switches: 'switch',
+};
 
 /**
  * Where a field stands, in words.

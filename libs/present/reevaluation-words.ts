@@ -221,14 +221,15 @@ const GIVEN = /(^|\.)(name|bus|bankBus|from|to|timeZone|currency|expression|inst
 export function inputRows({ inputs }: Reevaluation): string[][] {
   return inputs.map(({ path, before, after }) => {
     const isGiven = GIVEN.test(path);
-    const shown = (value: string | number | boolean | null): string => {
-      if (value === null) return '–';
-      if (typeof value === 'boolean') return codeWords(value ? 'yes' : 'no');
-      if (typeof value === 'number') return formatNumber(value, 'given');
-      return plainName(isGiven ? value : codeWords(value));
-    };
-    return [pathWords(path), shown(before), shown(after)];
+    return [pathWords(path), inputWords(before, isGiven), inputWords(after, isGiven)];
   });
+}
+
+function inputWords(value: string | number | boolean | null, isGiven: boolean): string {
+  if (value === null) return '–';
+  if (typeof value === 'boolean') return codeWords(value ? 'yes' : 'no');
+  if (typeof value === 'number') return formatNumber(value, 'given');
+  return plainName(isGiven ? value : codeWords(value));
 }
 
 /**
