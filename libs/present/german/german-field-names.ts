@@ -1,3 +1,4 @@
+// long: one table, a line a key
 /** Keys of a site file, entries of its lists, units in words and codes, by their words in English. */
 export const GERMAN_FIELD_NAMES: Readonly<Record<string, string>> = {
   '%': '%',
