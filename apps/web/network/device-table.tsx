@@ -37,7 +37,13 @@ export function DeviceTable({ result }: { result: Result }) {
               {fitted}
             </span>
           ),
-          state === 'falls short' ? <b key={device}>{state}</b> : state,
+          state === 'falls short' ? (
+            <b key={device} className="nowrap">
+              {state}
+            </b>
+          ) : (
+            state
+          ),
           basis === '' ? null : (
             <span key={device} className="soft nowrap">
               {basis}

@@ -1,7 +1,6 @@
 import type { Reevaluation, ResultChange, Verdict } from '#libs/engine/index.js';
 import { factorSince } from '#libs/present/factor-since.js';
 import { formatQuantity, inShownMark } from '#libs/present/format-number.js';
-import { pathWords } from '#libs/present/path-words.js';
 import {
   CHANGE_HEADS,
   changeRows,
@@ -183,13 +182,16 @@ function Inputs({ reevaluation, siteId }: { reevaluation: Reevaluation; siteId: 
       <RowTable
         name="Changed fields"
         heads={INPUT_HEADS}
-        rows={rows.map(([path = '', before, after]) => [
-          <a key={path} href={siteAddress(siteId, stationOfPath(path), { field: path })}>
-            {pathWords(path)}
-          </a>,
-          before,
-          after,
-        ])}
+        rows={rows.map(([words, before, after], at) => {
+          const { path } = reevaluation.inputs[at]!;
+          return [
+            <a key={path} href={siteAddress(siteId, stationOfPath(path), { field: path })}>
+              {words}
+            </a>,
+            before,
+            after,
+          ];
+        })}
       />
     </section>
   );

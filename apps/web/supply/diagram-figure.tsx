@@ -61,6 +61,9 @@ function DiagramSvg({ diagram, width }: { diagram: SingleLine; width: number }) 
             />
           ))
       )}
+      <Breaker x={feedX} y={108} />
+      <circle className="none stroke-ink" strokeDasharray="2 2" cx={feedX} cy={BUS_Y - 14} r={6} />
+      <Meter x={feedX} y={diagram.meteredAt === 'primary' ? 32 : BUS_Y - 36} />
       <path className="stroke-ink" strokeWidth="5" d={`M0 ${BUS_Y}H${width}`} />
       <text className="axis" x={0} y={BUS_Y - 10}>
         {isNarrow ? '' : diagram.bus}
@@ -94,6 +97,32 @@ function Grid({ x, words }: { x: number; words: string }) {
   );
 }
 
+/** A device that is needed there, dashed: its ratings stand at the network. */
+function Breaker({ x, y, look = 'stroke-ink' }: { x: number; y: number; look?: string }) {
+  return (
+    <g>
+      <rect className="fill-sheet" x={x - 6} y={y - 6} width={12} height={12} />
+      <rect className={`none ${look}`} strokeDasharray="2 2" x={x - 6} y={y - 6} width={12} height={12} />
+      <path className={look} strokeWidth="1.3" d={`M${x - 3.5} ${y - 3.5}l7 7m-7 0l7-7`} />
+    </g>
+  );
+}
+
+function Meter({ x, y }: { x: number; y: number }) {
+  return (
+    <g>
+      <path className="stroke-ink" d={`M${x} ${y}h12`} />
+      <rect className="none stroke-ink" strokeWidth="1.4" x={x + 12} y={y - 7} width={24} height={14} />
+      <text x={x + 24} y={y + 3.5} textAnchor="middle" style={{ fontSize: 9 }}>
+        kWh
+      </text>
+      <text className="axis" x={x + 42} y={y + 4}>
+        meter
+      </text>
+    </g>
+  );
+}
+
 function Transformer({
   x,
   feedX,
@@ -109,7 +138,6 @@ function Transformer({
       <circle className="none stroke-ink" strokeWidth="1.4" cx={x} cy={58} r={14} />
       <circle className="none stroke-ink" strokeWidth="1.4" cx={x} cy={78} r={14} />
       <path className="stroke-ink" strokeWidth="1.4" d={`M${x} 92V${BUS_Y}`} />
-      <path className="stroke-ink" strokeWidth="1.4" strokeDasharray="2 2" d={`M${x - 5} 119l10 10m-10 0l10-10`} />
       {words === null ? null : (
         <>
           <text className="strong" x={x + 22} y={66}>
@@ -191,12 +219,13 @@ function BankBranch({
   const pitch = Math.min(44, (to - from) / stages.length);
   const start = to - pitch * stages.length + pitch / 2;
   const x = (at: number) => start + at * pitch;
-  const line = y + 20;
+  const line = y + 24;
   const last = x(stages.length - 1);
-  const tap = isBelow ? to - 3 : (x(0) + last) / 2;
+  const tap = isBelow ? to - 7 : (x(0) + last) / 2;
   return (
     <g className="bank-branch">
       <path className="none stroke-bank" strokeWidth="1.6" d={`M${tap} ${BUS_Y}V${line}`} />
+      <Breaker x={tap} y={isBelow ? line - 24 : BUS_Y + 12} look="stroke-bank" />
       <path className="none stroke-bank" strokeWidth="2.4" d={`M${x(0)} ${line}H${Math.max(last, tap)}`} />
       {stages.map((stage, at) => (
         <StageBranch key={at} stage={stage} x={x(at)} y={line} />
