@@ -10,7 +10,8 @@ import type { HeaderColumn } from './header-column.js';
 import { headerColumns } from './header-sets.js';
 import { isUnitRow, withCellUnits, withUnit } from './header-units.js';
 import { headerWindows } from './header-windows.js';
-import { readNumberText } from './number-cell.js';
+import { type LongLayout, longLayout } from './long-layout.js';
+import { type NumberCell, readNumberText } from './number-cell.js';
 import { RowCells } from './row-cells.js';
 import { isTextRow } from './row-shape.js';
 import { type SideColumns, sideColumns } from './side-columns.js';
@@ -35,6 +36,8 @@ export interface CsvLayout {
   side: SideColumns;
   /** columns of the hours of a day in a file of one row a day */
   days: DayLayout | null;
+  /** columns of channel and number in a file of one row a channel and moment */
+  long: LongLayout | null;
 }
 
 interface Row {
@@ -192,7 +195,12 @@ function candidateAt(rows: Row[], index: number, delimiter: number, map: MeterMa
   );
   const roles = header.filter(({ role }) => role !== null);
   const said = map.headerRow !== undefined || map.columns !== undefined;
-  if (!said && !namesDay(row) && (roles.length < 2 || roles.every(({ role }) => role === 'time'))) return [];
+  const long = () =>
+    longLayout(
+      header,
+      data.map(({ cells }) => cells),
+    ) !== null;
+  if (!said && !namesDay(row) && (roles.length < 2 || roles.every(({ role }) => role === 'time')) && !long()) return [];
   const lastHeaderRow = row.number + (hasUnits ? 1 : 0);
   const followed = data[0]?.cells.some((cell, column) => isDatedCell(cell, header[column])) === true;
   const asWide = followed && data[0]!.cells.length === header.length;
@@ -221,7 +229,7 @@ function layoutOf(found: Candidate, map: MeterMap): CsvLayout {
   const ratios = statedRatios([...found.before.map(({ cells }) => cells.join(' ')), ...ratioColumns(names, sample)]);
   const file = { delimiter, names, headerRow: row.number, lastHeaderRow, header, ratios };
   const day = dayLayout(found, sample, map);
-  if (day !== null) return { ...file, ...day, choices: [], side: { meter: [], quality: [], unread: [] } };
+  if (day !== null) return { ...file, ...day, choices: [], side: { meter: [], quality: [], unread: [] }, long: null };
   const time = mappedTime(header, map, sample) ?? chooseTimeColumns(header, sample);
   if (time === null && sample.length === 0) {
     throw new InputProblem([{ code: 'empty-file', expected: 'rows of data under the header', found: 'none' }]);
@@ -233,11 +241,16 @@ function layoutOf(found: Candidate, map: MeterMap): CsvLayout {
       { code: 'no-time-column', row: row.number || 1, expected, found: listed === '' ? 'none' : listed },
     ]);
   }
+  const long = longLayout(header, sample);
+  if (long !== null) {
+    const side = sideColumns(header, sample, [], map);
+    return { ...file, time: { ...time, mark: map.stamp ?? time.mark }, choices: [], side, days: null, long };
+  }
   const choices = columnChoices(header, map, row.number);
   refuseDataBefore(found, time, choices);
   const mark = map.stamp ?? time.mark;
   const side = sideColumns(header, sample, choices, map);
-  return { ...file, time: { ...time, mark }, choices, side, days: null };
+  return { ...file, time: { ...time, mark }, choices, side, days: null, long };
 }
 
 /** Names with the first cell behind each: a column may repeat the ratio in every row. */
@@ -280,10 +293,7 @@ function mappedTime(header: readonly HeaderColumn[], map: MeterMap, sample: read
 
 function isNumber(text: string): boolean {
   if (text === '') return false;
-  const cell = { form: 'wrong' as const, value: 0 } as {
-    form: import('./number-cell.js').NumberForm;
-    value: number;
-  };
+  const cell: NumberCell = { form: 'wrong', value: 0 };
   readNumberText(text, cell);
   return cell.form !== 'wrong' && cell.form !== 'missing';
 }

@@ -62,6 +62,13 @@ export const WORDS = {
   year: 'year yr jahr annee ano anno jaar rok ar',
   month: 'month mon monat mois mes mese maand miesiac mesic',
   day: 'day tag jour dia giorno dag dzien den',
+  /** names of a column that says what the number beside it is */
+  channel:
+    'channel kanal canal canale quantity quantities parameter parametre parametro measurement measurand measure variable ' +
+    'register type series tag description obis item point grosse messgrosse kennzahl kennziffer grandeur magnitud ' +
+    'grandezza grootheid wielkosc name signal stream',
+  value: 'value values wert werte valeur valor valore waarde wartosc hodnota varde amount reading data messwert',
+  unit: 'unit units uom einheit unite unidad unita eenheid jednostka enhet',
   minute: 'minute minutes min minuto minuten minuut minuta',
   neutral:
     'total sum avg average mean net gross main site plant all mittel mittelwert moyenne media meter l ll ln kanal channel',

@@ -5,10 +5,18 @@ import { MAX_INTERVALS } from '../meter-format.js';
 import { refuseTooLong } from '../time/stamped-rows.js';
 import type { CsvLayout } from './csv-layout.js';
 import type { RowCells } from './row-cells.js';
+import { LongRows } from './long-rows.js';
 import { RowReader } from './row-reader.js';
 
 /** Rows of further meters are counted only. */
 const MOST_METERS = 50;
+
+/** What reads the rows of one meter. */
+export type MeterReader = RowReader | LongRows;
+
+function readerFor(layout: CsvLayout, map: MeterMap): MeterReader {
+  return layout.long === null ? new RowReader(layout, map) : new LongRows(layout, layout.long, map);
+}
 
 /**
  * Keeps the rows of each meter of a file apart. Where the map says which meter is wanted, rows of the others are passed
@@ -16,21 +24,21 @@ const MOST_METERS = 50;
  */
 export class MeterRows {
   /** the only reader of a file of one meter, or the first */
-  first: RowReader;
+  first: MeterReader;
   readonly #layout: CsvLayout;
   readonly #map: MeterMap;
-  readonly #readers = new Map<string, RowReader>();
+  readonly #readers = new Map<string, MeterReader>();
   /** names met, with those whose rows are not kept */
   readonly #names = new Set<string>();
   // the meter of the row before, and the bytes of its cell
   #lastBytes = new Uint8Array(0);
-  #last: RowReader | null = null;
+  #last: MeterReader | null = null;
   #rows = 0;
 
   constructor(layout: CsvLayout, map: MeterMap) {
     this.#layout = layout;
     this.#map = map;
-    this.first = new RowReader(layout, map);
+    this.first = readerFor(layout, map);
   }
 
   /**
@@ -56,7 +64,7 @@ export class MeterRows {
    * Readers with rows of data, by the meter's name; one without a name where the file names no meters.
    * @throws InputProblem where a row can't be read, or the map wants a meter that is not there
    */
-  close(): { readers: Map<string, RowReader>; meters: number } {
+  close(): { readers: Map<string, MeterReader>; meters: number } {
     if (this.#layout.side.meter.length === 0) this.#readers.set('', this.first);
     for (const reader of this.#readers.values()) {
       reader.end();
@@ -71,7 +79,7 @@ export class MeterRows {
     return { readers, meters: Math.max(readers.size, this.#names.size) };
   }
 
-  #readerOf(cells: RowCells): RowReader | null {
+  #readerOf(cells: RowCells): MeterReader | null {
     const { meter } = this.#layout.side;
     const [column] = meter;
     if (meter.length === 1 && column! < cells.count && sameBytes(cells, column!, this.#lastBytes)) return this.#last;
@@ -82,7 +90,7 @@ export class MeterRows {
     return this.#last;
   }
 
-  #readerNamed(name: string): RowReader | null {
+  #readerNamed(name: string): MeterReader | null {
     const known = this.#readers.get(name);
     if (known !== undefined) return known;
     const isHeader = this.#layout.side.meter.map((column) => this.#layout.names[column]).join(' / ') === name;
@@ -90,7 +98,7 @@ export class MeterRows {
     const wanted = this.#map.meter;
     if (wanted !== undefined && wanted.trim() !== name) return null;
     if (this.#readers.size >= MOST_METERS) return null;
-    const reader = this.#readers.size === 0 ? this.first : new RowReader(this.#layout, this.#map);
+    const reader = this.#readers.size === 0 ? this.first : readerFor(this.#layout, this.#map);
     this.#readers.set(name, reader);
     return reader;
   }
@@ -102,7 +110,7 @@ export class MeterRows {
     ]);
   }
 
-  #refuseNameless({ rows }: RowReader): never {
+  #refuseNameless({ rows }: MeterReader): never {
     const column = this.#layout.side.meter[0]! + 1;
     const expected = 'the name of the meter, as in other rows';
     throw new InputProblem([{ code: 'missing', row: rows.rowNumber[0]!, column, expected, found: 'nothing' }]);

@@ -8,7 +8,8 @@ import { type CsvLayout, findLayout, untoldColumns } from './csv-layout.js';
 import type { CsvFile } from './csv-meaning.js';
 import { DayRows } from './day-rows.js';
 import { fillerNotes, takeFillers } from './filler-numbers.js';
-import { MeterRows } from './meter-rows.js';
+import { LongRows } from './long-rows.js';
+import { type MeterReader, MeterRows } from './meter-rows.js';
 import { QuickRows } from './quick-rows.js';
 import { LONGEST_ROW_BYTES, RowBuffer } from './row-buffer.js';
 import { RowCells } from './row-cells.js';
@@ -51,7 +52,7 @@ async function meterRead(buffer: RowBuffer, file: UnreadFile, lane: Lane): Promi
   const { layout, map } = file;
   const rows = new MeterRows(layout, map);
   await readRows(buffer, layout, rows, {
-    quickReader: lane === 'general' ? null : rows.first,
+    quickReader: lane === 'general' || rows.first instanceof LongRows ? null : rows.first,
     sizeBytes: file.options.sizeBytes ?? 0,
   });
   const { readers, meters } = rows.close();
@@ -59,10 +60,18 @@ async function meterRead(buffer: RowBuffer, file: UnreadFile, lane: Lane): Promi
   if (reader === undefined || reader.rows.count === 0) refuseEmpty();
   if (readers.size > 1) askWhichMeter(file, readers, meters);
   const notes = map.meter === undefined ? [] : [note('meter-chosen', { meter: map.meter, others: meters - 1 })];
-  return {
-    file: { ...file, reader, fillers: takeFillers(reader, layout, map) },
-    notes,
-  };
+  return { file: fileOf(file, reader), notes: [...notes, ...longNotes(reader)] };
+}
+
+/** A file with the rows of one meter, whose layout may be known only now. */
+function fileOf(file: UnreadFile, reader: MeterReader): CsvFile {
+  const layout = reader instanceof LongRows ? reader.layoutOf(file.map) : file.layout;
+  return { ...file, layout, reader, fillers: takeFillers(reader, layout, file.map) };
+}
+
+function longNotes(reader: MeterReader): Remark[] {
+  if (!(reader instanceof LongRows) || reader.leftOut.size === 0) return [];
+  return [note('channels-left-out', { channels: [...reader.leftOut].join(', ') })];
 }
 
 /** A row a day; the rows themselves say what they hold. */
@@ -85,17 +94,26 @@ function refuseEmpty(): never {
 }
 
 /** A reading for each meter; a meter that can't be read as the file stands has none. */
-function askWhichMeter(file: UnreadFile, readers: Map<string, RowReader>, meters: number): never {
+function askWhichMeter(file: UnreadFile, readers: Map<string, MeterReader>, meters: number): never {
   const readings: QuestionReading[] = [];
   const room = new ReadingRoom();
   let failed: InputProblem | undefined;
   for (const [meter, reader] of readers) {
-    const first = firstReading({ ...file, reader, fillers: takeFillers(reader, file.layout, file.map) }, room);
+    const first = firstOf(file, reader, room);
     if (first instanceof InputProblem) failed ??= first;
     else readings.push(first.reading({ meter }));
   }
   if (readings.length === 0) throw failed!;
   throw new Question([{ id: 'meter', about: `which of the ${meters} meters in the file is read`, readings }]);
+}
+
+function firstOf(file: UnreadFile, reader: MeterReader, room: ReadingRoom) {
+  try {
+    return firstReading(fileOf(file, reader), room);
+  } catch (problem) {
+    if (problem instanceof InputProblem) return problem;
+    throw problem;
+  }
 }
 
 async function layoutOf(buffer: RowBuffer, { map = {} }: ReadOptions): Promise<CsvLayout> {
