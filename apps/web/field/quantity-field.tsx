@@ -40,17 +40,20 @@ export function TypedQuantity({
   onType: (text: string, read: { value: number | undefined } | null) => void;
 }) {
   const { state } = useDesk();
-  const [text, setText] = useState<string | null>(null);
-  const shown = text ?? state.typed[path] ?? textOf(kept);
+  const [own, setOwn] = useState<{ text: string; value: unknown } | null>(null);
+  const [isHeld, setHeld] = useState(false);
+  // What was typed stays in its own spelling for as long as it is what is kept: another version may have taken its place.
+  const stands = own !== null && (isHeld || own.value === null || own.value === kept);
+  const shown = (stands ? own.text : undefined) ?? state.typed[path] ?? textOf(kept);
   const read = shown.trim() === '' ? null : readTyped(shown, unit);
   const fault = read !== null && 'fault' in read ? read.fault : null;
   const echo = read !== null && 'echo' in read ? read.echo : null;
   const refusal = fault ?? refusalOf(state.problems, path);
   const type = (typed: string) => {
-    setText(typed);
     const now = readTyped(typed, unit);
-    if (typed.trim() === '') onType(typed, { value: undefined });
-    else onType(typed, 'value' in now ? { value: now.value } : null);
+    const found = typed.trim() === '' ? { value: undefined } : 'value' in now ? { value: now.value } : null;
+    setOwn({ text: typed, value: found === null ? null : found.value });
+    onType(typed, found);
   };
   return (
     <FieldFrame path={path} label={label} unit={unit} echo={echo} refusal={refusal}>
@@ -63,7 +66,11 @@ export function TypedQuantity({
         aria-invalid={refusal !== null}
         aria-describedby={refusal === null ? undefined : `refusal:${path}`}
         onChange={({ target }) => type(target.value)}
-        onBlur={() => fault === null && echo === null && setText(null)}
+        onFocus={() => setHeld(true)}
+        onBlur={() => {
+          setHeld(false);
+          if (fault === null && echo === null) setOwn(null);
+        }}
       />
     </FieldFrame>
   );

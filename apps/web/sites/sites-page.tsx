@@ -26,7 +26,7 @@ export function SitesPage() {
       <div className="sites-line" />
       <main className="sites">
         <div className="headline">
-          <h1>{headline(sites)}</h1>
+          <h1>{headline(sites?.filter(({ id }) => !gone.has(id)) ?? null)}</h1>
           <div className="field">
             <label htmlFor="search">search</label>
             <span className="rule">
