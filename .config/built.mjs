@@ -22,7 +22,13 @@ const dist = join(root, 'dist');
 const stampFile = join(dist, '.built');
 const lockFile = join(dist, '.building');
 const sourceFolders = ['apps/server', 'apps/cli', 'libs', 'migrations'];
-const settings = ['package.json', 'tsconfig.json', '.config/tsconfig.build.json', '.config/vite-commands.config.mjs'];
+const settings = [
+  'package.json',
+  'tsconfig.json',
+  '.config/tsconfig.build.json',
+  '.config/vite-commands.config.mjs',
+  '.config/vite-server.config.mjs',
+];
 const pageStampFile = join(dist, '.built-page');
 const pageFolders = ['apps/web', 'libs/engine', 'libs/contract', 'libs/present'];
 const pageSettings = ['package.json', '.config/vite.config.mjs', '.config/page-fonts.mjs'];
@@ -69,7 +75,9 @@ function buildPage() {
 function bundle(config) {
   const vite = join(root, 'node_modules', 'vite', 'bin', 'vite.js');
   const words = [vite, 'build', '--config', join(root, '.config', config), '--logLevel', 'warn'];
-  return spawnSync(process.execPath, words, { cwd: root, stdio: ['ignore', 2, 2] }).status === 0;
+  // whoever asks for it, and a test does, the page is built as it is served
+  const env = { ...process.env, NODE_ENV: 'production' };
+  return spawnSync(process.execPath, words, { cwd: root, env, stdio: ['ignore', 2, 2] }).status === 0;
 }
 
 function build() {
@@ -84,6 +92,7 @@ function build() {
   copyAssets(files);
   removeOrphans();
   if (!bundle('vite-commands.config.mjs')) return false;
+  if (existsSync(join(root, 'apps/server/main.ts')) && !bundle('vite-server.config.mjs')) return false;
   writeFileSync(stampFile, stamp);
   return true;
 }

@@ -11,9 +11,11 @@ const tsc = join(root, 'node_modules', 'typescript', 'bin', 'tsc');
 const build = join(root, '.config', 'tsconfig.build.json');
 const vite = join(root, 'node_modules', 'vite', 'bin', 'vite.js');
 const page = join(root, '.config', 'vite.config.mjs');
+const server = join(root, '.config', 'vite-server.config.mjs');
 const children = [
   [tsc, '-p', build, '--watch', '--preserveWatchOutput'],
   [vite, 'build', '--watch', '--config', page, '--logLevel', 'warn'],
+  [vite, 'build', '--watch', '--config', server, '--logLevel', 'warn'],
   ['--watch', join(root, 'dist', 'apps', 'server', 'main.js'), ...process.argv.slice(2)],
 ].map((args) => spawn(process.execPath, args, { stdio: 'inherit', cwd: root }));
 

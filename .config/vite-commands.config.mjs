@@ -23,6 +23,7 @@ export default defineConfig({
     minify: false,
     sourcemap: true,
     rolldownOptions: {
+      checks: { pluginTimings: false },
       input: Object.fromEntries(programs.map(({ name, source }) => [name, source])),
       output: { entryFileNames: '[name].js', chunkFileNames: 'parts/[name].js' },
     },

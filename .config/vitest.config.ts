@@ -2,20 +2,31 @@ import { fileURLToPath } from 'node:url';
 import { defaultServerConditions } from 'vite';
 import { defineConfig } from 'vitest/config';
 
-// 'import' or 'default' in this list would reach Node itself and make it load the wrong build of some packages.
-const conditions = ['source', ...defaultServerConditions];
+// 'import' or 'default' in these lists would reach Node itself and make it load the wrong build of some packages.
+const fromSource = resolved(['source', ...defaultServerConditions]);
+const fromDist = resolved([...defaultServerConditions]);
 const soak = process.env.VARWRIGHT_SOAK === '1';
 const withDatabases = ['libs/store/**/*.spec.ts', 'libs/jobs/**/*.spec.ts', 'apps/server/**/*.spec.ts'];
 // What is timed has the machine to itself.
 const alone = ['test/browser/pace.spec.ts'];
 const startPostgres = ['test/support/postgres.ts'];
+// What is asked of the program as a whole is asked of what runs in service, the compiled one: Node loads it as it stands.
+const compiled = {
+  globalSetup: ['test/support/build.ts', ...startPostgres],
+  server: { deps: { external: [/\/dist\//] } },
+};
 
 // Pure functions keep nothing between one test and the next, and every other test has a database, a server, a browser or a
 // program of its own: files share what is loaded.
 const shared = { isolate: false };
 
+function resolved(conditions: string[]) {
+  return { resolve: { conditions }, ssr: { resolve: { conditions } } };
+}
+
 const project = (name: string, include: string[], timeoutMs: number, more: object = {}) => ({
   extends: true as const,
+  ...('server' in more ? fromDist : fromSource),
   test: {
     name,
     include,
@@ -27,8 +38,6 @@ const project = (name: string, include: string[], timeoutMs: number, more: objec
 
 export default defineConfig({
   root: fileURLToPath(new URL('..', import.meta.url)),
-  resolve: { conditions },
-  ssr: { resolve: { conditions } },
   test: {
     pool: 'forks',
     // left to itself the runner keeps a core free
@@ -46,14 +55,13 @@ export default defineConfig({
         { exclude: withDatabases, ...shared },
       ),
       project('store', withDatabases, 30_000, { globalSetup: startPostgres, ...shared }),
-      project('api', ['test/api/**/*.spec.ts'], 120_000, { globalSetup: startPostgres, ...shared }),
-      project('whole', ['test/{golden,faults,browser}/**/*.spec.ts'], 120_000, {
-        globalSetup: startPostgres,
+      project('whole', ['test/{api,golden,faults,browser}/**/*.spec.ts'], 120_000, {
+        ...compiled,
         exclude: alone,
         ...shared,
       }),
       project('alone', alone, 120_000, {
-        globalSetup: startPostgres,
+        ...compiled,
         maxWorkers: 1,
         sequence: { groupOrder: 1 },
       }),

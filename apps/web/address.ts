@@ -19,7 +19,8 @@ export function readAddress(hash: string): Address {
   if (path === '') return { page: 'sites' };
   if (path === 'papers') return { page: 'papers' };
   const [first, siteId, station = 'bank', ...rest] = path.split('/');
-  if (first !== 'sites' || siteId === undefined || rest.length > 0) return { page: 'unknown', asked: path };
+  if (first !== 'sites' || siteId === undefined || siteId === '' || rest.length > 0)
+    return { page: 'unknown', asked: path };
   if (station === 'survey') return { page: 'survey', siteId };
   if (station === 'reevaluation') return { page: 'reevaluation', siteId, revision: revisionIn(search) };
   if (!isStation(station)) return { page: 'unknown', asked: path };

@@ -51,6 +51,10 @@ export const ASSUMPTION_MESSAGES: Messages = {
     'The load that damps a resonance is {value} at the most, the mean load of the record.',
     'It lowers the peaks of the nominal case; the corners take 0 as well.',
   ),
+  'loads.dampingListed': assumed(
+    'What damps a resonance are the motors and resistive loads listed in the network, and nothing beside them.',
+    'Give the load at the bank’s bus that is not among them; the corners leave all of it out as well.',
+  ),
   'default.loads.dampingKw.min': assumed(
     'The load that damps a resonance may fall to {value}.',
     'The severe end; nothing to settle.',

@@ -21,6 +21,7 @@ const SOURCES: Readonly<Record<string, string>> = words({
   'loads.distorting.none': 'declared for the site',
   'loads.backgroundPct.none': 'declared for the site',
   'loads.angles': 'the site file',
+  'loads.dampingListed': 'the site file',
   'supply.noTransformer': 'nothing said',
   'limits.tighterCopy': 'copies of the standard',
   'money.unused': 'the site file',

@@ -3,8 +3,8 @@ import type { Chart } from './chart.js';
 import { formatFixed } from './format-number.js';
 import { say } from './language.js';
 import { formatMonth } from './local-stamp.js';
-import { monthAxis, pairMarks } from './month-pairs.js';
 import { billDecimals, formatMoney } from './money-words.js';
+import { monthAxis, pairMarks } from './month-pairs.js';
 import { niceStep } from './ticks.js';
 
 /**

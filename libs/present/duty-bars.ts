@@ -2,7 +2,7 @@ import { type Corner, type Duty, NEAR_RATIO } from '#libs/engine/index.js';
 import type { BarFigure } from './bar-figure.js';
 import { dutyName as fullName } from './figure-words.js';
 import { formatApart, formatNumber, formatQuantity, GAP } from './format-number.js';
-import { plainName } from './plain-name.js';
+import { standingName } from './standing-name.js';
 import { verdictWords } from './verdict-words.js';
 
 /** Bars end here and are drawn broken beyond [%]. */
@@ -90,7 +90,7 @@ export function cornerWords(corner: Corner | null): string {
  */
 export function standingWords({ standing, networkCapacitanceFactor, networkInductanceFactor }: Corner): string[] {
   return [
-    ...(standing === undefined ? [] : [plainName(standing)]),
+    ...(standing === undefined ? [] : [standingName(standing)]),
     ...(networkCapacitanceFactor === undefined
       ? []
       : [`network’s capacitors ${toleranceWords(networkCapacitanceFactor, networkInductanceFactor ?? 1)}`]),

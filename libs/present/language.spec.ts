@@ -7,6 +7,7 @@ const TURNED: Catalogue = {
   language: 'de',
   decimalMark: ',',
   texts: { '{0} of {1} levels': 'von {1} Stufen {0}', head: 'Kopf', 'a line and the next': 'zwei Zeilen' },
+  fields: {},
   messages: {},
   partings: ['kopf|zeile'],
 };

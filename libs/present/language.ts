@@ -5,6 +5,8 @@ export interface Catalogue {
   decimalMark: '.' | ',';
   /** by the English text, values as {0}, {1} in any order */
   texts: Readonly<Record<string, string>>;
+  /** keys and codes of a site file, by their words in English; apart from the texts, since a word's case may differ there */
+  fields: Readonly<Record<string, string>>;
   /** by remark code, in place of the English message */
   messages: Readonly<Record<string, Translation>>;
   /** words of several, small letters, with the places where a narrow line may part them */
@@ -37,6 +39,15 @@ export function inLanguage<T>(catalogue: Catalogue | null, speak: () => T): T {
   } finally {
     spoken = before;
   }
+}
+
+/**
+ * A key or code of a site file in the language in force.
+ * @param said its words in English
+ * @returns the words; English where the catalogue has no entry
+ */
+export function fieldName(said: string): string {
+  return spoken?.fields[said] ?? said;
 }
 
 /** The catalogue in force, null while English is spoken. */

@@ -1,6 +1,6 @@
 import type { Duty, EstimateOutcome, Outcome } from '#libs/engine/index.js';
-import { formatApart, formatNumber, formatQuantity, formatRange, GAP } from './format-number.js';
 import { engineName } from './engine-name.js';
+import { formatApart, formatNumber, formatQuantity, formatRange, GAP } from './format-number.js';
 import { groupName } from './group-name.js';
 import { say } from './language.js';
 import { plainName } from './plain-name.js';

@@ -1,3 +1,6 @@
+import { engineName } from './engine-name.js';
+import { fieldName } from './language.js';
+
 /** Units that end a key of the site file or of a result, as they are printed; the longest first. */
 const UNITS: readonly (readonly [ending: string, unit: string])[] = [
   ['PerKwh', 'per kWh'],
@@ -6,6 +9,9 @@ const UNITS: readonly (readonly [ending: string, unit: string])[] = [
   ['PerDay', 'a day'],
   ['WPerKvar', 'W/kvar'],
   ['PerKvar', 'per kvar'],
+  ['M3PerH', 'm³/h'],
+  ['OhmPerKm', 'Ω/km'],
+  ['Years', 'years'],
   ['Kvarh', 'kvarh'],
   ['Kvar', 'kvar'],
   ['Kwh', 'kWh'],
@@ -21,12 +27,15 @@ const UNITS: readonly (readonly [ending: string, unit: string])[] = [
   ['Hz', 'Hz'],
   ['Uf', 'µF'],
   ['Uh', 'µH'],
+  ['Mh', 'mH'],
   ['H', ''],
   ['V', 'V'],
   ['A', 'A'],
   ['S', 's'],
   ['W', 'W'],
   ['C', '°C'],
+  ['K', 'K'],
+  ['M', 'm'],
 ];
 
 /** Steps whose words are not those of their key. */
@@ -38,10 +47,26 @@ const STEPS: Readonly<Record<string, string>> = {
   asOf: 'as of',
   npv: 'net present value',
   irrPct: 'internal rate (%)',
+  kw: 'kW',
+  pct: '%',
+  emcClass: 'class of the bus',
+  enclosureIp: 'enclosure, IP',
+  interStageUh: 'between stages (µH)',
+  kvaShare: 'share of kVA',
+  kvarBasis: 'basis of kvar',
+  sizeAwg: 'size, AWG',
+  ambientMaxC: 'highest ambient (°C)',
+  ambientDayC: 'ambient, mean of a day (°C)',
+  ambientYearC: 'ambient, mean of a year (°C)',
 };
 
 /** What one entry of a list is called, where that is not the list's name without its s. */
-const ENTRIES: Readonly<Record<string, string>> = { stages: 'group', buses: 'bus', classes: 'class' };
+const ENTRIES: Readonly<Record<string, string>> = {
+  stages: 'group',
+  buses: 'bus',
+  classes: 'class',
+  switches: 'switch',
+};
 
 /**
  * Where a field stands, in words.
@@ -55,11 +80,13 @@ export function pathWords(path: string): string {
 function stepWords(step: string): string {
   const key = step.replace(/\[.*$/, '');
   const places = [...step.matchAll(/\[(\d+)\]/g)].map(([, at]) => ` ${Number(at) + 1}`).join('');
-  return places === '' ? keyWords(key) : `${ENTRIES[key] ?? entryWords(keyWords(key))}${places}`;
+  return places === '' ? keyWords(key) : `${entryWords(key)}${places}`;
 }
 
 function entryWords(list: string): string {
-  return list.replace(/ies$/, 'y').replace(/([^s])s$/, '$1');
+  const { said, unit } = takenApart(list);
+  const entry = ENTRIES[list] ?? said.replace(/ies$/, 'y').replace(/([^s])s$/, '$1');
+  return withUnit(entry, unit);
 }
 
 /**
@@ -68,11 +95,37 @@ function entryWords(list: string): string {
  * @returns "reconnect delay (s)"
  */
 export function keyWords(key: string): string {
-  if (STEPS[key] !== undefined) return STEPS[key];
+  const { said, unit } = takenApart(key);
+  return withUnit(said, unit);
+}
+
+function withUnit(said: string, unit: string): string {
+  return unit === '' ? fieldName(said) : `${fieldName(said)} (${fieldName(unit)})`;
+}
+
+function takenApart(key: string): { said: string; unit: string } {
+  if (STEPS[key] !== undefined) {
+    const [, said = STEPS[key], unit = ''] = /^(.+) \((.+)\)$/.exec(STEPS[key]) ?? [];
+    return { said, unit };
+  }
   const ending = UNITS.find(([end]) => key.endsWith(end) && key.length > end.length);
   const bare = ending === undefined ? key : key.slice(0, -ending[0].length);
-  const spaced = bare.replace(/([a-z\d])([A-Z])/g, '$1 $2').toLowerCase();
-  return ending === undefined || ending[1] === '' ? spaced : `${spaced} (${ending[1]})`;
+  return { said: spaced(bare), unit: ending?.[1] ?? '' };
+}
+
+function spaced(key: string): string {
+  return key.replace(/([a-z\d])([A-Z])/g, '$1 $2').toLowerCase();
+}
+
+/**
+ * A code that stands as a field's value, in words.
+ * @param code `nearestLevel`; other texts, names that somebody gave among them, stay as they are
+ * @returns "nearest level"
+ */
+export function codeWords(code: string): string {
+  const said = /^[a-z]+(?:[A-Z][a-z]+)*(?:-[a-z]+)*$/.test(code) ? spaced(code).replaceAll('-', ' ') : code;
+  const name = fieldName(said);
+  return name === said ? engineName(said) : name;
 }
 
 /**

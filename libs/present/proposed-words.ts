@@ -63,5 +63,5 @@ function ratiosOf(groups: readonly StageGroup[]): { ratios: string; isPartly: bo
 export function bankName(groups: readonly StageGroup[]): string {
   const { ratios, isPartly } = ratiosOf(groups);
   if (ratios === '') return say`No reactors`;
-  return isPartly ? say`Partly ${ratios} reactors` : say`${ratios} reactors`;
+  return isPartly ? say`Partly ${ratios}\u00a0reactors` : say`${ratios}\u00a0reactors`;
 }

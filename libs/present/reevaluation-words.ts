@@ -1,9 +1,10 @@
 import type { MeasuredEntry, Reevaluation, Remedy, ResultChange, SinceWhen, Verdict } from '#libs/engine/index.js';
-import { countWord } from './findings.js';
 import { engineName } from './engine-name.js';
+import { countWord } from './findings.js';
 import { formatNumber, formatQuantity } from './format-number.js';
 import { say, words } from './language.js';
 import { formatDate, formatMonth } from './local-stamp.js';
+import { codeWords, pathWords } from './path-words.js';
 import { plainName } from './plain-name.js';
 import { stagesOutWords } from './tonight-words.js';
 import { VERDICT_WORDS, verdictWords } from './verdict-words.js';
@@ -209,17 +210,26 @@ const MONTHS = words([
 /** Heads of the table of changed inputs. */
 export const INPUT_HEADS = words(['field', 'before', 'after'] as const);
 
+/** Fields that hold what somebody wrote, which is never a code. */
+const GIVEN = /(^|\.)(name|bus|bankBus|from|to|timeZone|currency|expression|instrument|hours|date|month)(\[|$)/;
+
 /**
- * Fields of the site that changed.
+ * Fields of the site that changed, in words.
  * @param reevaluation the bank judged again
  * @returns cells, one a head
  */
 export function inputRows({ inputs }: Reevaluation): string[][] {
-  const shown = (value: string | number | boolean | null): string => {
-    if (value === null) return '–';
-    return typeof value === 'number' ? formatNumber(value, 'given') : plainName(String(value));
-  };
-  return inputs.map(({ path, before, after }) => [path, shown(before), shown(after)]);
+  return inputs.map(({ path, before, after }) => {
+    const isGiven = GIVEN.test(path);
+    return [pathWords(path), inputWords(before, isGiven), inputWords(after, isGiven)];
+  });
+}
+
+function inputWords(value: string | number | boolean | null, isGiven: boolean): string {
+  if (value === null) return '–';
+  if (typeof value === 'boolean') return codeWords(value ? 'yes' : 'no');
+  if (typeof value === 'number') return formatNumber(value, 'given');
+  return plainName(isGiven ? value : codeWords(value));
 }
 
 /**

@@ -8,6 +8,7 @@ import { formatDate, formatLength, formatMonth } from './local-stamp.js';
 import type { Message } from './message.js';
 import { MESSAGES } from './message-catalogue.js';
 import { plainName } from './plain-name.js';
+import { standingName } from './standing-name.js';
 
 const PLACEHOLDER = /\{(\w+)(?::([^|}]*)\|([^}]*))?\}/g;
 const OPTIONAL = /\[([^\]]*)\]/g;
@@ -119,6 +120,7 @@ function textWords(name: string, value: string): string {
   if (name === 'month') return formatMonth(value);
   if (name === 'date') return formatDate(value);
   if (name === 'device') return deviceName(value);
+  if (name === 'standing') return standingName(value);
   const said = name === 'value' || name === 'limit' ? enteredWords(spaced(value)) : spaced(value);
   return plainName(GIVEN_NAMES.has(name) ? said : engineName(said));
 }

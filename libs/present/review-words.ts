@@ -6,7 +6,7 @@ import type { Review, ReviewState } from '#libs/review/review.js';
 import type { Capacity, ReviewAct } from '#libs/review/review-act.js';
 import { formatNumber, formatQuantity } from './format-number.js';
 import { say, words } from './language.js';
-import { partWords } from './path-words.js';
+import { codeWords, partWords } from './path-words.js';
 
 /** A revision's state as a person reads it. */
 export const STATE_WORDS: Record<ReviewState, string> = words({
@@ -143,7 +143,9 @@ export function fieldWords(value: unknown): string {
   if (value === undefined) return '–';
   if (value === null) return 'none';
   if (typeof value === 'number') return formatNumber(value, 'given');
-  return typeof value === 'object' ? partWords(value, fieldWords) : String(value);
+  if (typeof value === 'boolean') return value ? 'yes' : 'no';
+  if (typeof value === 'string') return codeWords(value);
+  return partWords(value, fieldWords);
 }
 
 /**

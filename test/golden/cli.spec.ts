@@ -269,8 +269,13 @@ describe('the program ends with', () => {
     program.stdout.on('data', (chunk) => {
       stdout += chunk;
     });
-    program.stdin.write('time begin,active power (kW)');
-    setTimeout(() => program.kill('SIGINT'), 1000);
+    // It says how far it is once a second has gone by: from then on it can certainly be interrupted.
+    program.stderr.once('data', () => program.kill('SIGINT'));
+    program.stdin.write('time begin,active power (kW)\n');
+    let minute = 0;
+    const feed = () => program.stdin.write(`${new Date(minute++ * 60_000).toISOString()},1\n`);
+    const feeding = setInterval(feed, 20);
+    program.on('exit', () => clearInterval(feeding));
     expect(await exitCode(program)).toBe(130);
     expect(JSON.parse(stdout).error.code).toBe('stopped');
   });

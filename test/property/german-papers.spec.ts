@@ -17,7 +17,7 @@ import { putEstimateInWords, putInWords } from '#libs/present/put-in-words.js';
 import { renderProposal } from '#libs/proposal/render-proposal.js';
 import { generatedCase } from '../support/generated-site.js';
 import { MADE_BANK, madeFrame, madeOutcome, madeRecord, madeSite } from '../support/outcome.js';
-import { readPdf, textOf, type PlacedWord, wordsOf } from '../support/pdf-text.js';
+import { type PlacedWord, readPdf, textOf, wordsOf } from '../support/pdf-text.js';
 import { printedWorkings, wrongWorkings } from '../support/printed-workings.js';
 import { runs } from '../support/soak.js';
 
@@ -52,13 +52,17 @@ function enteredIn({ site, result }: Outcome | EstimateOutcome): string {
 
 /** What may stand on a German paper: the catalogue's words, and those of what was entered. */
 function vocabulary(outcome: Outcome | EstimateOutcome): Set<string> {
-  const { texts, messages } = GERMAN;
+  const { texts, fields, messages } = GERMAN;
   const said = Object.values(messages).flatMap(({ text, consequence, subject = '' }) => [text, consequence, subject]);
   const own = [
     'main cos Varwright kvar kvarh kWh kVA MVA min max THD TDD IEC IEEE NEC EUR SHA csv SVG JSON UTC Aldane',
   ];
   const standards = outcome.result.duties.map(({ source }) => source);
-  return new Set(wordsIn([...Object.values(texts), ...said, enteredIn(outcome), ...own, ...standards].join('\n')));
+  return new Set(
+    wordsIn(
+      [...Object.values(texts), ...Object.values(fields), ...said, enteredIn(outcome), ...own, ...standards].join('\n'),
+    ),
+  );
 }
 
 /** Words of a page of which one stands on the other. */

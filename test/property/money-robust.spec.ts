@@ -11,8 +11,8 @@ import {
   type MoneyQuantity,
   type Outcome,
   outColumn,
-  planBank,
   type PriceBook,
+  planBank,
   type Site,
   studySite,
   type Tariff,
@@ -169,6 +169,15 @@ describe(`a bank's worth with its inputs moved (seed ${SEED})`, () => {
     for (const [i, kvar] of grownStudy(study, 1).record.laggingKvar.entries()) {
       expect(kvar).toBeCloseTo(record.laggingKvar[i]!, 9);
     }
+  });
+
+  it('leaves the record as it was, though columns are written over in turn', () => {
+    const record = madeYear(SEED);
+    const columns = () => [record.activeKw, record.laggingKvar, record.leadingKvar].map((column) => Array.from(column));
+    const before = columns();
+    const first = firm(site(), record);
+    expect(columns()).toEqual(before);
+    expect(firm(site(), record)).toEqual(first);
   });
 
   it('has nothing to say before it is asked, and nothing of a site without a tariff', () => {

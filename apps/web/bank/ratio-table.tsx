@@ -14,21 +14,23 @@ export function RatioTable() {
   const { desk, state } = useDesk();
   const rows = latestResult(state)?.reactorTrials ?? [];
   const bank = bankOf(state);
+  const isPriced = rows.some((row) => capitalIn(row) !== null);
+  const heads = headsOf(isPriced ? String(state.document?.currency ?? '') : null);
   return (
     <section className="section" aria-labelledby="ratios">
       <h2 id="ratios">The same stages at other reactor ratios</h2>
-      <p className="caption">One row is one bank, judged at every level and corner. Choose a row to put it in place.</p>
-      <ScrollTable name="Reactor ratios">
+      <p className="caption">
+        One row is one bank, judged at every level and corner. Choose a row to put it in place.
+        {isPriced ? ' A dash: the price book names no such reactor.' : ''}
+      </p>
+      <ScrollTable name="Reactor ratios" look="table restacked">
         <thead>
           <tr>
-            <th scope="col">reactors, rating</th>
-            <th scope="col" className="right">
-              tuned order
-            </th>
-            <th scope="col" className="right">
-              peaks
-            </th>
-            <th scope="col">verdict</th>
+            {heads.map((head, at) => (
+              <th key={head} scope="col" className={at > 0 && head !== 'verdict' ? 'right' : undefined}>
+                {head}
+              </th>
+            ))}
           </tr>
         </thead>
         <tbody>
@@ -38,13 +40,24 @@ export function RatioTable() {
                 <th scope="row" className="nowrap">
                   <span className="trial">
                     {row.filter ? 'filter ' : ''}
-                    {ratioWords(row.reactorPct)}, {formatQuantity(row.ratedV, 'V', 'given')}
+                    {ratioWords(row.reactorPct)}
                   </span>
                 </th>
-                <TrialCells row={row} />
+                {cellsOf(row, isPriced).map((cell, at) => (
+                  <td
+                    key={heads[at + 1]}
+                    data-head={heads[at + 1]}
+                    className={cell === '–' ? 'absent right' : 'right nowrap'}
+                  >
+                    {cell}
+                  </td>
+                ))}
+                <td className="judged">
+                  <VerdictWords verdict={row.verdict} />
+                </td>
               </tr>
               <tr>
-                <td colSpan={4}>
+                <td colSpan={heads.length}>
                   <span className="trial-told">
                     {row.chosen || bank === null ? (
                       <span className="caption">as it stands</span>
@@ -76,25 +89,40 @@ export function RatioTable() {
   );
 }
 
+/** @param currency of the prices; null where no row is priced */
+function headsOf(currency: string | null): string[] {
+  const cost = currency === null ? [] : [currency === '' ? 'costs new' : `costs new, ${currency}`];
+  return ['reactors', 'tuned order', 'peaks', 'effective kvar', ...cost, 'verdict'];
+}
+
+/** A result that an earlier engine gave has no capital in its rows. */
+function capitalIn({ capital }: Partial<ReactorTrial>): number | null {
+  return capital ?? null;
+}
+
+function cellsOf(row: ReactorTrial, isPriced: boolean): string[] {
+  const { tunedOrderH, effectiveKvar } = row;
+  const capital = capitalIn(row);
+  return [
+    tunedOrderH === null ? '–' : formatNumber(tunedOrderH),
+    peakWords(row),
+    formatNumber(effectiveKvar),
+    ...(isPriced ? [capital === null ? '–' : formatNumber(capital, 'whole')] : []),
+  ];
+}
+
 function isMixed(bank: ReturnType<typeof bankOf>): boolean {
   return new Set(bank?.stages.map(({ reactorPct }) => reactorPct ?? 0)).size > 1;
 }
 
-function TrialCells({ row }: { row: ReactorTrial }) {
-  const { tunedOrderH, verdict } = row;
-  return (
-    <>
-      <td className="right">{tunedOrderH === null ? '–' : formatNumber(tunedOrderH)}</td>
-      <td className="right nowrap">{peakWords(row)}</td>
-      <td>
-        <VerdictWords verdict={verdict} />
-      </td>
-    </>
-  );
+/** The rating it takes, why the row is not the bank's, and the duty nearest to its limit, each number once. */
+function trialWords(row: ReactorTrial): string {
+  const told = judgedWords(row);
+  const rating = `capacitors for ${formatQuantity(row.ratedV, 'V', 'given')}`;
+  return told === '' ? rating : `${rating}; ${told}`;
 }
 
-/** The duty nearest to its limit, and why the row is not the bank's, each number once. */
-function trialWords(row: ReactorTrial): string {
+function judgedWords(row: ReactorTrial): string {
   const reason = row.chosen ? '' : trialReason(row);
   if (row.worstDuty === null || row.worstRatio === null || reason.includes(row.worstDuty)) return reason;
   const nearest = `nearest its limit: ${row.worstDuty}, ${formatQuantity(100 * row.worstRatio, '%', 'whole')}`;

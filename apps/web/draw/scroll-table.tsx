@@ -7,7 +7,7 @@ export function ScrollTable({
   children,
 }: {
   name: string;
-  look?: 'table' | 'map';
+  look?: 'table' | 'table restacked' | 'map';
   children: ReactNode;
 }) {
   return (

@@ -36,6 +36,8 @@ function YearSvg({ map, width, onDay }: { map: YearMap; width: number; onDay: ((
   const bottom = TOP + ROWS * row;
   const fits = width >= 620;
   const height = bottom + 42 + (fits ? map.table.columns.length * 20 - 12 : 0);
+  // Names that would touch each other are told by their first letter.
+  const isTight = map.months.some(({ name, from, to }) => to - from > 27 && (to - from) * cell < textWidth(name) + 10);
   const steps = [...new Set(map.cells)].sort((a, b) => a - b);
   return (
     <svg
@@ -75,9 +77,9 @@ function YearSvg({ map, width, onDay }: { map: YearMap; width: number; onDay: ((
         <g key={`${name}${from}`}>
           {from === 0 ? null : <path className="month" d={`M${LEFT + from * cell} ${TOP}V${bottom}`} />}
           <path className="hair" d={`M${LEFT + from * cell} ${TOP - 16}V${TOP}`} />
-          {(to - from) * cell < textWidth(name) + 4 ? null : (
+          {(to - from) * cell < textWidth(isTight ? 'M' : name) + 4 ? null : (
             <text className="axis" x={LEFT + from * cell + 4} y={TOP - 6}>
-              {name}
+              {isTight ? name.charAt(0) : name}
             </text>
           )}
         </g>

@@ -1,6 +1,12 @@
+import { pathWords } from '#libs/present/path-words.js';
 import { siteAddress, stationOfPath } from '../address.js';
 import { useDesk } from '../desk/use-desk.js';
 import { DifferingFields } from './differing-fields.js';
+
+function inSentence(path: string): string {
+  const words = pathWords(path);
+  return `${words.charAt(0).toUpperCase()}${words.slice(1)}`;
+}
 
 /** What stands in the way of keeping, above the open station: nothing typed is lost meanwhile. */
 export function Notices() {
@@ -23,7 +29,7 @@ export function Notices() {
           Not computed: {fault}
         </p>
       )}
-      {general.map(({ expected, found }) => (
+      {(state.stage === 'unknown' ? [] : general).map(({ expected, found }) => (
         <p className="notice" role="alert" key={expected}>
           Refused: it needs {expected}; found {found}.
         </p>
@@ -35,7 +41,7 @@ export function Notices() {
             {problems.map(({ path, expected, found }) =>
               path === undefined ? null : (
                 <li key={`${path} ${expected}`}>
-                  <a href={siteAddress(desk.siteId, stationOfPath(path), { field: path })}>{path}</a>{' '}
+                  <a href={siteAddress(desk.siteId, stationOfPath(path), { field: path })}>{inSentence(path)}</a>{' '}
                   {`needs ${expected}; found ${found}.`}
                 </li>
               ),

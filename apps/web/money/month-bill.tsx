@@ -23,7 +23,7 @@ export function MonthBill({ bills, papers }: { bills: Money['bills']; papers: Mo
       <div className="plot-head">
         <h2 id="month-bill">{`The bill of ${formatMonth(month.month)}: ${saved} saved`}</h2>
         <label className="pick">
-          <span className="soft">month </span>
+          <span className="soft">month</span>
           <select value={at} onChange={({ target }) => setPicked(Number(target.value))}>
             {before.months.map(({ month: name }, k) => (
               <option key={name} value={k}>

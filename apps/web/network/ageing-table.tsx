@@ -14,9 +14,9 @@ export function AgeingTable({ ageing }: { ageing: Ageing }) {
   );
   return (
     <section className="section" aria-labelledby="ageing">
-      <h2 id="ageing">{`As capacitors age, ${ageingFinding(ageing)}`}</h2>
+      <h2 id="ageing">{`Ageing: ${ageingFinding(ageing)}`}</h2>
       <p className="caption">{ageingNote()}</p>
-      <RowTable name="Ageing" heads={AGEING_HEADS} rows={rows} right={[1, 2, 3, 5]} />
+      <RowTable name="Ageing" heads={AGEING_HEADS} rows={rows} right={[1, 2, 3, 5]} judged={at} />
     </section>
   );
 }

@@ -25,17 +25,30 @@ export function DeviceTable({ result }: { result: Result }) {
       <RowTable
         name="Devices"
         heads={HEADS}
+        judged={HEADS.indexOf('stands')}
         rows={deviceTable({ result }).map(({ device, met, need, fitted, state, basis }) => [
           device,
           met,
           need,
-          <span key={device} className="nowrap">
-            {fitted}
-          </span>,
-          state === 'falls short' ? <b key={device}>{state}</b> : state,
-          <span key={device} className="soft nowrap">
-            {basis}
-          </span>,
+          fitted === '–' ? (
+            fitted
+          ) : (
+            <span key={device} className="nowrap">
+              {fitted}
+            </span>
+          ),
+          state === 'falls short' ? (
+            <b key={device} className="nowrap">
+              {state}
+            </b>
+          ) : (
+            state
+          ),
+          basis === '' ? null : (
+            <span key={device} className="soft nowrap">
+              {basis}
+            </span>
+          ),
         ])}
       />
     </section>

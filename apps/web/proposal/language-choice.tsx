@@ -8,8 +8,8 @@ export function LanguageChoice() {
   const chosen = usePaperLanguage();
   return (
     <p className="row gap">
-      <label>
-        Language of the next revision’s paper{' '}
+      <label className="pick">
+        Language of the next revision’s paper
         <select value={chosen} onChange={({ target }) => choosePaperLanguage(target.value as Language)}>
           {LANGUAGES.map((language) => (
             <option key={language} value={language} lang={language}>

@@ -5,7 +5,7 @@ import { reevaluationAddress } from '../address.js';
 import type { RevisionHeadShown, RevisionShown } from '../api/shown.js';
 import { isChanged, staleFrom } from '../desk/desk-state.js';
 import { useDesk } from '../desk/use-desk.js';
-import { ScrollTable } from '../draw/scroll-table.js';
+import { RowTable } from '../draw/row-table.js';
 import { VerdictWords } from '../draw/verdict-mark.js';
 import { valueAt } from '../field/document-path.js';
 import { Headline } from '../working/headline.js';
@@ -83,11 +83,7 @@ function KeptPaper({ kept }: { kept: RevisionShown }) {
             Open it beside this page
           </a>
         </p>
-        <iframe
-          className="paper no-print"
-          src={`${links.proposal}#toolbar=0&view=FitH`}
-          title={`Proposal ${number}, revision ${revision}`}
-        />
+        <PaperPreview address={links.proposal} title={`Proposal ${number}, revision ${revision}`} />
       </section>
       {review === null ? null : <ReviewState kept={kept} review={review} />}
       <FindingsList />
@@ -104,39 +100,44 @@ function KeptPaper({ kept }: { kept: RevisionShown }) {
   );
 }
 
+/** The paper within the page, where the browser can show one there. */
+function PaperPreview({ address, title }: { address: string; title: string }) {
+  // An older browser that does not say is given the frame.
+  if (navigator.pdfViewerEnabled === false) {
+    return (
+      <p className="paper-unseen no-print">
+        This browser shows no PDF within a page.{' '}
+        <a href={address} download>
+          Download it
+        </a>{' '}
+        to read it.
+      </p>
+    );
+  }
+  return <iframe className="paper no-print" src={`${address}#toolbar=0&view=FitH`} title={title} />;
+}
+
 function Revisions({ revisions }: { revisions: readonly RevisionHeadShown[] }) {
   return (
-    <ScrollTable name="Revisions">
-      <thead>
-        <tr>
-          {['revision', 'made', 'what', 'verdict', 'review', 'paper'].map((head) => (
-            <th key={head} scope="col">
-              {head}
-            </th>
-          ))}
-        </tr>
-      </thead>
-      <tbody>
-        {revisions.map((one) => (
-          <tr key={one.revision}>
-            <th scope="row">{one.revision}</th>
-            <td className="nowrap">{one.createdAt.slice(0, 16).replace('T', ' ')} UTC</td>
-            <td>
-              {one.kind === 'plan' ? 'Proposed' : 'Judged'}: {inShownMark(one.proposed)}
-            </td>
-            <td>
-              <VerdictWords verdict={one.verdict} />
-            </td>
-            <td>
-              <a href={`/sites/${one.siteId}/revisions/${one.revision}/review`}>{STATE_WORDS[one.state ?? 'draft']}</a>
-            </td>
-            <td>
-              <a href={one.links.proposal}>PDF</a>
-            </td>
-          </tr>
-        ))}
-      </tbody>
-    </ScrollTable>
+    <RowTable
+      name="Revisions"
+      heads={['revision', 'made', 'what', 'verdict', 'review', 'paper']}
+      judged={3}
+      rows={revisions.map((one) => [
+        one.revision,
+        <span key="made" className="nowrap">
+          {one.createdAt.slice(0, 16).replace('T', ' ')} UTC
+        </span>,
+        `${one.kind === 'plan' ? 'Proposed' : 'Judged'}: ${inShownMark(one.proposed)}`,
+        <VerdictWords key="verdict" verdict={one.verdict} />,
+        <a key="review" href={`/sites/${one.siteId}/revisions/${one.revision}/review`}>
+          {STATE_WORDS[one.state ?? 'draft']}
+        </a>,
+        <a key="paper" href={one.links.proposal}>
+          PDF
+        </a>,
+      ])}
+    />
   );
 }
 

@@ -48,7 +48,7 @@ export function SurveySheet({ siteId }: { siteId: string }) {
 
 function SurveyTable({ site }: { site: SiteDocument }) {
   return (
-    <table>
+    <table className="survey-table">
       <thead>
         <tr>
           <th scope="col">what</th>
@@ -70,7 +70,7 @@ function SurveyTable({ site }: { site: SiteDocument }) {
                 {isPhotograph ? <span className="box" aria-hidden="true" /> : null}
                 {look}
               </td>
-              <td className="soft">{path === undefined ? '' : entered(valueAt(site, path), unit ?? '')}</td>
+              <td className="soft entered">{path === undefined ? '' : entered(valueAt(site, path), unit ?? '')}</td>
               <td />
             </tr>
           )),

@@ -90,6 +90,6 @@ function refusalWords(error: unknown): string[] {
   if (problems.length === 0) return [detail];
   return problems.slice(0, 12).map(({ row, column, expected, found }) => {
     const place = row === undefined ? '' : `Row ${row}${column === undefined ? '' : `, column ${column}`}: `;
-    return `${place}needs ${expected}; found ${found}.`;
+    return `${place === '' ? 'Needs' : `${place}needs`} ${expected}; found ${found}.`;
   });
 }

@@ -1,8 +1,6 @@
-import { Fragment } from 'react';
 import type { Reevaluation, ResultChange, Verdict } from '#libs/engine/index.js';
 import { factorSince } from '#libs/present/factor-since.js';
 import { formatQuantity, inShownMark } from '#libs/present/format-number.js';
-import { pathWords } from '#libs/present/path-words.js';
 import {
   CHANGE_HEADS,
   changeRows,
@@ -108,15 +106,14 @@ function Changes({ reevaluation, currency }: { reevaluation: Reevaluation; curre
         name="Changed figures"
         heads={CHANGE_HEADS}
         right={[1, 2, 3]}
+        judged={4}
         rows={rows.map((cells, at) => [
-          <Fragment key="figure">
-            {cells[0]}
-            <span className="narrow">
-              <Judgement change={changes[at]!} words={cells[4]!} />
-            </span>
-          </Fragment>,
-          ...cells.slice(1, 4),
-          <Judgement key={at} change={changes[at]!} words={cells[4]!} />,
+          ...cells.slice(0, 4),
+          cells[4] === '–' && changes[at]!.id !== 'verdict' ? (
+            '–'
+          ) : (
+            <Judgement key={at} change={changes[at]!} words={cells[4]!} />
+          ),
         ])}
       />
     </section>
@@ -149,6 +146,7 @@ function Remedies({ reevaluation, currency }: { reevaluation: Reevaluation; curr
         name="Ways to mend the bank"
         heads={REMEDY_HEADS}
         right={[2, 3, 4, 5]}
+        judged={1}
         rows={remedyRows(reevaluation, currency).map((cells, at) => [
           at === best ? <b key="way">{inShownMark(cells[0]!)}</b> : inShownMark(cells[0]!),
           <VerdictWords key="verdict" verdict={remedies[at]!.verdict} />,
@@ -184,13 +182,16 @@ function Inputs({ reevaluation, siteId }: { reevaluation: Reevaluation; siteId: 
       <RowTable
         name="Changed fields"
         heads={INPUT_HEADS}
-        rows={rows.map(([path = '', before, after]) => [
-          <a key={path} href={siteAddress(siteId, stationOfPath(path), { field: path })}>
-            {pathWords(path)}
-          </a>,
-          before,
-          after,
-        ])}
+        rows={rows.map(([words, before, after], at) => {
+          const { path } = reevaluation.inputs[at]!;
+          return [
+            <a key={path} href={siteAddress(siteId, stationOfPath(path), { field: path })}>
+              {words}
+            </a>,
+            before,
+            after,
+          ];
+        })}
       />
     </section>
   );

@@ -1,5 +1,6 @@
 import { useState } from 'react';
 import type { Problem } from '#libs/engine/index.js';
+import { pathWords } from '#libs/present/path-words.js';
 import { siteAddress } from '../address.js';
 import { ask, NoConnection, Refused } from '../api/ask.js';
 import type { SiteShown } from '../api/shown.js';
@@ -24,9 +25,7 @@ export function NewSite() {
     } catch (error) {
       if (error instanceof Refused) {
         setProblems(error.problem.problems);
-        setFailure(
-          `Not added: ${error.problem.problems.map(({ path, expected }) => `${path ?? ''} needs ${expected}`).join('; ')}.`,
-        );
+        setFailure(refusalWords(error.problem.problems));
       } else
         setFailure(error instanceof NoConnection ? 'Not added: no connection. What you typed is kept.' : String(error));
     }
@@ -78,7 +77,6 @@ export function NewSite() {
           <label className="way picked-file">
             Add from a site file
             <input
-              className="hidden"
               type="file"
               accept=".json,application/json"
               onChange={({ target }) => void importFile(target.files?.[0])}
@@ -93,6 +91,13 @@ export function NewSite() {
       )}
     </section>
   );
+}
+
+/** What is said of a refusal as a whole; what has a field in the form is said there. */
+function refusalWords(problems: readonly Problem[]): string {
+  const others = problems.filter(({ path }) => !BLANK.some((field) => field.path === path));
+  const told = others.map(({ path, expected }) => `${path === undefined ? 'it' : pathWords(path)} needs ${expected}`);
+  return told.length === 0 ? 'Not added: see the marked field.' : `Not added: ${told.join('; ')}.`;
 }
 
 /** The example's own meter file, from this server and back to it. */

@@ -1,8 +1,13 @@
 import type { Feeder, SingleLine, StageSymbol } from '#libs/present/single-line.js';
 import { ChartFigure, type Figured } from '../draw/chart-figure.js';
+import { textWidth } from '../draw/plot-box.js';
 import { usePlotWidth } from '../draw/plot-size.js';
 
 const BUS_Y = 168;
+/** Where the bank stands below the feeders, its tap goes down beside them. */
+const TAP_ROOM = 20;
+/** Lines that fit below a feeder before the bank begins. */
+const MOST_LINES = 4;
 
 /** The single-line diagram: open symbols in ink, the bank in blue. */
 export function DiagramFigure({ diagram }: { diagram: SingleLine }) {
@@ -36,7 +41,7 @@ function DiagramSvg({ diagram, width }: { diagram: SingleLine; width: number }) 
   const isNarrow = width < 520;
   const feedX = width * (isNarrow ? 0.3 : 0.34);
   const bankFrom = stages.length === 0 ? width : width * (isNarrow ? 0.02 : 0.54);
-  const loadTo = isNarrow || stages.length === 0 ? width : width * 0.52;
+  const loadTo = stages.length === 0 ? width : isNarrow ? width - TAP_ROOM : width * 0.52;
   const pitch = loadTo / Math.max(1, feeders.length);
   const bankY = isNarrow ? BUS_Y + 128 : BUS_Y;
   return (
@@ -56,6 +61,9 @@ function DiagramSvg({ diagram, width }: { diagram: SingleLine; width: number }) 
             />
           ))
       )}
+      <Breaker x={feedX} y={108} />
+      <circle className="none stroke-ink" strokeDasharray="2 2" cx={feedX} cy={BUS_Y - 14} r={6} />
+      <Meter x={feedX} y={diagram.meteredAt === 'primary' ? 32 : BUS_Y - 36} />
       <path className="stroke-ink" strokeWidth="5" d={`M0 ${BUS_Y}H${width}`} />
       <text className="axis" x={0} y={BUS_Y - 10}>
         {isNarrow ? '' : diagram.bus}
@@ -70,7 +78,7 @@ function DiagramSvg({ diagram, width }: { diagram: SingleLine; width: number }) 
         <FeederSymbol key={feeder.name} feeder={feeder} x={pitch * (at + 0.5)} pitch={pitch} />
       ))}
       {stages.length === 0 ? null : (
-        <BankBranch stages={stages} words={diagram.bank} from={bankFrom} to={width} y={bankY} busY={BUS_Y} />
+        <BankBranch stages={stages} words={diagram.bank} from={bankFrom} to={width} y={bankY} isBelow={isNarrow} />
       )}
     </svg>
   );
@@ -84,6 +92,32 @@ function Grid({ x, words }: { x: number; words: string }) {
       <path className="stroke-ink" strokeWidth="1.4" d={`M${x} 22V44`} />
       <text x={x + 20} y={18}>
         {words}
+      </text>
+    </g>
+  );
+}
+
+/** A device that is needed there, dashed: its ratings stand at the network. */
+function Breaker({ x, y, look = 'stroke-ink' }: { x: number; y: number; look?: string }) {
+  return (
+    <g>
+      <rect className="fill-sheet" x={x - 6} y={y - 6} width={12} height={12} />
+      <rect className={`none ${look}`} strokeDasharray="2 2" x={x - 6} y={y - 6} width={12} height={12} />
+      <path className={look} strokeWidth="1.3" d={`M${x - 3.5} ${y - 3.5}l7 7m-7 0l7-7`} />
+    </g>
+  );
+}
+
+function Meter({ x, y }: { x: number; y: number }) {
+  return (
+    <g>
+      <path className="stroke-ink" d={`M${x} ${y}h12`} />
+      <rect className="none stroke-ink" strokeWidth="1.4" x={x + 12} y={y - 7} width={24} height={14} />
+      <text x={x + 24} y={y + 3.5} textAnchor="middle" style={{ fontSize: 9 }}>
+        kWh
+      </text>
+      <text className="axis" x={x + 42} y={y + 4}>
+        meter
       </text>
     </g>
   );
@@ -104,7 +138,6 @@ function Transformer({
       <circle className="none stroke-ink" strokeWidth="1.4" cx={x} cy={58} r={14} />
       <circle className="none stroke-ink" strokeWidth="1.4" cx={x} cy={78} r={14} />
       <path className="stroke-ink" strokeWidth="1.4" d={`M${x} 92V${BUS_Y}`} />
-      <path className="stroke-ink" strokeWidth="1.4" strokeDasharray="2 2" d={`M${x - 5} 119l10 10m-10 0l10-10`} />
       {words === null ? null : (
         <>
           <text className="strong" x={x + 22} y={66}>
@@ -119,10 +152,21 @@ function Transformer({
   );
 }
 
+/** Words set in lines no wider than their room, where no single word is. */
+function brokenAt(text: string, room: number): string[] {
+  const lines: string[] = [];
+  for (const word of text.split(' ')) {
+    const longer = lines.length === 0 ? word : `${lines.at(-1)} ${word}`;
+    if (lines.length > 0 && textWidth(longer) <= room) lines[lines.length - 1] = longer;
+    else lines.push(word);
+  }
+  return lines;
+}
+
 function FeederSymbol({ feeder, x, pitch }: { feeder: Feeder; x: number; pitch: number }) {
   const y = BUS_Y + 32;
   const name = 6.2 * feeder.name.length > pitch - 4 ? feeder.short : feeder.name;
-  const details = feeder.detail.split(', ');
+  const details = feeder.detail.split(', ').flatMap((detail) => brokenAt(detail, pitch + 8));
   return (
     <g>
       <path className="stroke-ink" strokeWidth="1.4" d={`M${x} ${BUS_Y}V${y}`} />
@@ -147,9 +191,9 @@ function FeederSymbol({ feeder, x, pitch }: { feeder: Feeder; x: number; pitch: 
       <text x={x} y={y + 44} textAnchor="middle">
         {name}
       </text>
-      {details.map((detail, at) => (
+      {details.slice(0, MOST_LINES).map((detail, at) => (
         <text key={detail} className="axis" x={x} y={y + 59 + at * 14} textAnchor="middle">
-          {6.2 * detail.length > pitch + 16 ? '' : detail}
+          {detail}
         </text>
       ))}
     </g>
@@ -162,27 +206,27 @@ function BankBranch({
   from,
   to,
   y,
-  busY,
+  isBelow,
 }: {
   stages: readonly StageSymbol[];
   words: readonly string[];
   from: number;
   to: number;
   y: number;
-  busY: number;
+  /** the feeders stand between bus and bank */
+  isBelow: boolean;
 }) {
   const pitch = Math.min(44, (to - from) / stages.length);
   const start = to - pitch * stages.length + pitch / 2;
   const x = (at: number) => start + at * pitch;
-  const line = y + 20;
+  const line = y + 24;
+  const last = x(stages.length - 1);
+  const tap = isBelow ? to - 7 : (x(0) + last) / 2;
   return (
     <g className="bank-branch">
-      <path
-        className="none stroke-bank"
-        strokeWidth="1.6"
-        d={`M${(x(0) + x(stages.length - 1)) / 2} ${busY}V${line}`}
-      />
-      <path className="none stroke-bank" strokeWidth="2.4" d={`M${x(0)} ${line}H${x(stages.length - 1)}`} />
+      <path className="none stroke-bank" strokeWidth="1.6" d={`M${tap} ${BUS_Y}V${line}`} />
+      <Breaker x={tap} y={isBelow ? line - 24 : BUS_Y + 12} look="stroke-bank" />
+      <path className="none stroke-bank" strokeWidth="2.4" d={`M${x(0)} ${line}H${Math.max(last, tap)}`} />
       {stages.map((stage, at) => (
         <StageBranch key={at} stage={stage} x={x(at)} y={line} />
       ))}

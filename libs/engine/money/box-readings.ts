@@ -1,10 +1,9 @@
 import { DemandBox } from './demand-box.js';
 import { EnergyReading } from './energy-reading.js';
-import type { Grouping, Groupings, Period } from './grouping.js';
+import type { EnergyShape, Groupings, Period } from './grouping.js';
 import type { MeterBox } from './meter-box.js';
 import type { ReactiveBasis } from './papers.js';
 import type { Range } from './range.js';
-import { reactiveOf } from './reactive-basis.js';
 import type { Selection } from './selection.js';
 
 /** Energies of a selection between the ends of a box, period by period. */
@@ -15,20 +14,16 @@ export class EnergyBox {
   readonly low: EnergyReading;
   readonly high: EnergyReading;
 
-  /**
-   * @param selection the intervals
-   * @param grouping their periods, null for whole months
-   * @param hours length of an interval [h]
-   */
-  constructor(selection: Selection, grouping: Grouping | null, hours: number) {
-    this.selection = selection;
-    this.byMonth = grouping === null;
-    this.low = new EnergyReading(selection, grouping, hours);
-    this.high = new EnergyReading(selection, grouping, hours);
+  /** @param shape intervals, periods, hours */
+  constructor(shape: EnergyShape) {
+    this.selection = shape.selection;
+    this.byMonth = shape.grouping === null;
+    this.low = new EnergyReading(shape);
+    this.high = new EnergyReading(shape);
   }
 
   /**
-   * Adds up one month.
+   * Turns to one month.
    * @param m index of the month
    * @param box the meter's ends
    */
@@ -47,7 +42,7 @@ export class EnergyBox {
    * @returns E_p [kWh]
    */
   activeKwh(period: number): Range {
-    return { lo: this.low.activeKwh[period]!, hi: this.high.activeKwh[period]! };
+    return { lo: this.low.activeKwh(period), hi: this.high.activeKwh(period) };
   }
 
   /**
@@ -59,14 +54,11 @@ export class EnergyBox {
     const { low, high } = this;
     if (basis === 'net') {
       return {
-        lo: Math.max(low.laggingKvarh[period]! - high.leadingKvarh[period]!, 0),
-        hi: Math.max(high.laggingKvarh[period]! - low.leadingKvarh[period]!, 0),
+        lo: Math.max(low.laggingKvarh(period) - high.leadingKvarh(period), 0),
+        hi: Math.max(high.laggingKvarh(period) - low.leadingKvarh(period), 0),
       };
     }
-    return {
-      lo: reactiveOf(basis, low.laggingKvarh[period]!, low.leadingKvarh[period]!),
-      hi: reactiveOf(basis, high.laggingKvarh[period]!, high.leadingKvarh[period]!),
-    };
+    return { lo: low.reactiveKvarh(basis, period), hi: high.reactiveKvarh(basis, period) };
   }
 }
 
@@ -91,8 +83,7 @@ export class BoxReadings {
     const key = `${per} ${selection.key}`;
     const known = this.#energies.get(key);
     if (known !== undefined) return known;
-    const groupings = this.#groupings;
-    const made = new EnergyBox(selection, groupings.periods(selection, per), groupings.calendar.intervalS / 3600);
+    const made = new EnergyBox(this.#groupings.energyShape(selection, per));
     this.#energies.set(key, made);
     return made;
   }
@@ -122,7 +113,7 @@ export class BoxReadings {
   }
 
   /**
-   * Forms every box for one month.
+   * Turns every box to one month.
    * @param m index of the month
    * @param box the meter's ends
    */

@@ -14,6 +14,11 @@ interface Ends {
   leadingAtMaxKw: Float64Array;
 }
 
+/** What is asked for of a period. */
+const QUANTITIES = ['kw', 'kva', 'kvar', 'atMaxKw'] as const;
+
+type Quantity = (typeof QUANTITIES)[number];
+
 /** Greatest block means of a selection between the ends of a box, period by period. */
 export class DemandBox {
   /** periods of the month read */
@@ -24,6 +29,9 @@ export class DemandBox {
   readonly #high: Ends;
   /** block means: kW, lagging, leading, lower ends, then upper ones */
   readonly #means: Float64Array[];
+  readonly #formed = new Set<Quantity>();
+  #m = 0;
+  #box: MeterBox | null = null;
 
   /** @param shape intervals, blocks, periods, basis */
   constructor(shape: DemandShape) {
@@ -36,19 +44,38 @@ export class DemandBox {
   }
 
   /**
-   * Finds the ends of one month.
+   * Turns to one month.
    * @param m index of the month
-   * @param box the meter's ends
+   * @param box the meter's ends; the month's intervals stay as they are until the next month is read
    */
   read(m: number, box: MeterBox): void {
-    const { blocks, periods } = this.#shape;
+    const { periods } = this.#shape;
+    this.#m = m;
+    this.#box = box;
     this.periods = periods === null ? 1 : periods.sizes[m]!.length;
+    this.#formed.clear();
+  }
+
+  // A quantity is formed when it is first asked for; where blocks are means, all of them at once.
+  #form(quantity: Quantity): void {
+    if (this.#formed.has(quantity)) return;
+    const { blocks, periods } = this.#shape;
+    if (periods !== null || !blocks.single[this.#m]!) {
+      this.#formAll(this.#m, this.#box!);
+      for (const one of QUANTITIES) this.#formed.add(one);
+      return;
+    }
+    this.#formed.add(quantity);
+    if (quantity === 'kw') this.#singleKw(this.#m, this.#box!);
+    else if (quantity === 'kva') this.#singleKva(this.#m, this.#box!);
+    else if (quantity === 'kvar') this.#singleKvar(this.#m, this.#box!);
+    else this.#singleAtMaxKw(this.#m, this.#box!);
+  }
+
+  #formAll(m: number, box: MeterBox): void {
+    const { blocks } = this.#shape;
     for (const ends of [this.#low, this.#high]) {
       for (const column of Object.values(ends) as Float64Array[]) column.fill(0, 0, this.periods);
-    }
-    if (periods === null && blocks.single[m]!) {
-      this.#readSingle(m, box);
-      return;
     }
     this.#meanBlocks(m, box);
     const periodOfBlock = this.#periodOfBlock?.[m] ?? null;
@@ -59,27 +86,34 @@ export class DemandBox {
     for (let b = 0; b < count; b++) this.#takeAtMaxKw(b, periodOfBlock === null ? 0 : periodOfBlock[b]!);
   }
 
-  // Whole months of blocks that are intervals: the same ends, kept in locals. A search forms hundreds of them.
-  // biome-ignore lint/complexity/noExcessiveCognitiveComplexity: a kernel; its greatest values stay in locals
-  #readSingle(m: number, { low, high }: MeterBox): void {
-    const { selection, basis } = this.#shape;
-    const { intervals, monthFrom } = selection;
+  #singleKw(m: number, { low, high }: MeterBox): void {
+    const { intervals, monthFrom } = this.#shape.selection;
+    const { activeKw: lowActiveKw } = low;
+    const { activeKw: highActiveKw } = high;
+    const end = monthFrom[m + 1]!;
+    let [lowKw, highKw] = [0, 0];
+    for (let k = monthFrom[m]!; k < end; k++) {
+      const i = intervals[k]!;
+      if (lowActiveKw[i]! > lowKw) lowKw = lowActiveKw[i]!;
+      if (highActiveKw[i]! > highKw) highKw = highActiveKw[i]!;
+    }
+    this.#low.kw[0] = lowKw;
+    this.#high.kw[0] = highKw;
+  }
+
+  // Greatest values stay in locals: a search forms hundreds of them.
+  #singleKva(m: number, { low, high }: MeterBox): void {
+    const { intervals, monthFrom } = this.#shape.selection;
     const { activeKw: lowActiveKw, laggingKvar: lowLaggingKvar, leadingKvar: lowLeadingKvar } = low;
     const { activeKw: highActiveKw, laggingKvar: highLaggingKvar, leadingKvar: highLeadingKvar } = high;
     const end = monthFrom[m + 1]!;
-    let [lowKw, highKw, lowSquare, highSquare, lowKvar, highKvar] = [0, 0, 0, 0, 0, 0];
+    let [lowSquare, highSquare] = [0, 0];
     for (let k = monthFrom[m]!; k < end; k++) {
       const i = intervals[k]!;
       const kwLo = lowActiveKw[i]!;
       const kwHi = highActiveKw[i]!;
-      const laggingLo = lowLaggingKvar[i]!;
-      const laggingHi = highLaggingKvar[i]!;
-      const leadingLo = lowLeadingKvar[i]!;
-      const leadingHi = highLeadingKvar[i]!;
-      const netLo = laggingLo - leadingHi;
-      const netHi = laggingHi - leadingLo;
-      if (kwLo > lowKw) lowKw = kwLo;
-      if (kwHi > highKw) highKw = kwHi;
+      const netLo = lowLaggingKvar[i]! - highLeadingKvar[i]!;
+      const netHi = highLaggingKvar[i]! - lowLeadingKvar[i]!;
       const nearKw = kwLo > 0 ? kwLo : Math.min(kwHi, 0);
       const nearNet = netLo > 0 ? netLo : Math.min(netHi, 0);
       const near = nearKw * nearKw + nearNet * nearNet;
@@ -88,18 +122,31 @@ export class DemandBox {
       const farNet = -netLo > netHi ? netLo : netHi;
       const far = farKw * farKw + farNet * farNet;
       if (far > highSquare) highSquare = far;
-      const kvarLo = basis === 'net' ? netLo : reactiveOf(basis, laggingLo, leadingLo);
-      const kvarHi = basis === 'net' ? netHi : reactiveOf(basis, laggingHi, leadingHi);
+    }
+    this.#low.kva[0] = Math.sqrt(lowSquare);
+    this.#high.kva[0] = Math.sqrt(highSquare);
+  }
+
+  #singleKvar(m: number, { low, high }: MeterBox): void {
+    const { selection, basis } = this.#shape;
+    const { intervals, monthFrom } = selection;
+    let [lowKvar, highKvar] = [0, 0];
+    for (let k = monthFrom[m]!; k < monthFrom[m + 1]!; k++) {
+      const i = intervals[k]!;
+      const [laggingLo, laggingHi] = [low.laggingKvar[i]!, high.laggingKvar[i]!];
+      const [leadingLo, leadingHi] = [low.leadingKvar[i]!, high.leadingKvar[i]!];
+      const kvarLo = basis === 'net' ? laggingLo - leadingHi : reactiveOf(basis, laggingLo, leadingLo);
+      const kvarHi = basis === 'net' ? laggingHi - leadingLo : reactiveOf(basis, laggingHi, leadingHi);
       if (kvarLo > lowKvar) lowKvar = kvarLo;
       if (kvarHi > highKvar) highKvar = kvarHi;
     }
-    put(this.#low, { kw: lowKw, kva: Math.sqrt(lowSquare), kvar: lowKvar });
-    put(this.#high, { kw: highKw, kva: Math.sqrt(highSquare), kvar: highKvar });
-    this.#readSingleAtMaxKw(m, { low, high });
+    this.#low.kvar[0] = lowKvar;
+    this.#high.kvar[0] = highKvar;
   }
 
   // The interval of greatest kW is one of those whose upper end reaches the greatest lower end.
-  #readSingleAtMaxKw(m: number, { low, high }: MeterBox): void {
+  #singleAtMaxKw(m: number, { low, high }: MeterBox): void {
+    this.#form('kw');
     const { intervals, monthFrom } = this.#shape.selection;
     const reached = this.#low.kw[0]!;
     const infinite = Number.POSITIVE_INFINITY;
@@ -161,6 +208,7 @@ export class DemandBox {
    * @returns greatest mean, ≥ 0 [kW]
    */
   maxKw(period: number): Range {
+    this.#form('kw');
     return { lo: this.#low.kw[period]!, hi: this.#high.kw[period]! };
   }
 
@@ -169,6 +217,7 @@ export class DemandBox {
    * @returns [kVA]
    */
   maxKva(period: number): Range {
+    this.#form('kva');
     return { lo: this.#low.kva[period]!, hi: this.#high.kva[period]! };
   }
 
@@ -177,6 +226,7 @@ export class DemandBox {
    * @returns [kvar]
    */
   maxKvar(period: number): Range {
+    this.#form('kvar');
     return { lo: this.#low.kvar[period]!, hi: this.#high.kvar[period]! };
   }
 
@@ -186,6 +236,7 @@ export class DemandBox {
    * @returns kvar of the block of greatest kW [kvar]
    */
   kvarAtMaxKw(basis: ReactiveBasis, period: number): Range {
+    this.#form('atMaxKw');
     const at = (ends: Ends, column: 'laggingAtMaxKw' | 'leadingAtMaxKw'): number => {
       const value = ends[column][period]!;
       return Number.isFinite(value) ? value : 0;
@@ -202,12 +253,6 @@ export class DemandBox {
 function endsOf(periods: number): Ends {
   const column = (): Float64Array => new Float64Array(periods);
   return { kw: column(), kva: column(), kvar: column(), laggingAtMaxKw: column(), leadingAtMaxKw: column() };
-}
-
-function put(ends: Ends, { kw, kva, kvar }: { kw: number; kva: number; kvar: number }): void {
-  ends.kw[0] = kw;
-  ends.kva[0] = kva;
-  ends.kvar[0] = kvar;
 }
 
 function raise(column: Float64Array, at: number, value: number): void {

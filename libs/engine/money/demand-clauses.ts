@@ -72,19 +72,19 @@ export const DEMAND_BASES: Record<
 > = {
   kW: {
     unit: 'kW',
-    of: (demand, period) => demand.maxKw[period]!,
-    words: (demand, period) => put(demand.maxKw[period]!),
+    of: (demand, period) => demand.maxKw(period),
+    words: (demand, period) => put(demand.maxKw(period)),
   },
   kVA: {
     unit: 'kVA',
-    of: (demand, period) => demand.maxKva[period]!,
-    words: (demand, period) => put(demand.maxKva[period]!),
+    of: (demand, period) => demand.maxKva(period),
+    words: (demand, period) => put(demand.maxKva(period)),
   },
   kWOrKvaShare: {
     unit: 'kW',
-    of: (demand, period, kvaShare) => Math.max(demand.maxKw[period]!, kvaShare * demand.maxKva[period]!),
+    of: (demand, period, kvaShare) => Math.max(demand.maxKw(period), kvaShare * demand.maxKva(period)),
     words: (demand, period, kvaShare) =>
-      `max(${put(demand.maxKw[period]!)}, ${product(kvaShare, demand.maxKva[period]!)})`,
+      `max(${put(demand.maxKw(period))}, ${product(kvaShare, demand.maxKva(period))})`,
   },
 };
 
@@ -107,11 +107,11 @@ export function kvarClause(ground: ClauseGround, clause: KvarBeyondRatioClause):
     pricePerUnit: clause.pricePerUnit,
   };
   const kvar = (demand: DemandReading, period: number): number =>
-    clause.at === 'maxKw' ? demand.kvarAtMaxKw(basis, period) : demand.maxKvar[period]!;
+    clause.at === 'maxKw' ? demand.kvarAtMaxKw(basis, period) : demand.maxKvar(period);
   const formed: Formed = {
-    quantity: ({ demand }, period) => Math.max(kvar(demand, period) - clause.ratio * demand.maxKw[period]!, 0),
+    quantity: ({ demand }, period) => Math.max(kvar(demand, period) - clause.ratio * demand.maxKw(period), 0),
     words: ({ demand }, period) =>
-      `max(${put(kvar(demand, period))} − ${product(clause.ratio, demand.maxKw[period]!)}, 0)`,
+      `max(${put(kvar(demand, period))} − ${product(clause.ratio, demand.maxKw(period))}, 0)`,
   };
   return priced([part], formed, { unit: 'kvar', carries: clause.ratchet !== undefined });
 }

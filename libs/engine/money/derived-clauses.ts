@@ -98,16 +98,16 @@ export function quantityOf(
   const demand = () => ground.readings.demand(chosen, 'month', meant.basis);
   switch (quantity) {
     case 'activeKwh':
-      return () => energy.activeKwh[0]!;
+      return () => energy.activeKwh(0);
     case 'laggingKvarh':
-      return () => energy.laggingKvarh[0]!;
+      return () => energy.laggingKvarh(0);
     case 'leadingKvarh':
-      return () => energy.leadingKvarh[0]!;
+      return () => energy.leadingKvarh(0);
     case 'maxKw':
     case 'maxKva':
     case 'maxKvar': {
-      const column = demand()[quantity];
-      return () => column[0]!;
+      const reading = demand();
+      return () => reading[quantity](0);
     }
     case 'powerFactor': {
       const readings = factorReadings(ground, chosen, 'month');

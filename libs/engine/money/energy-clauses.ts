@@ -78,7 +78,7 @@ export function energyClause(ground: ClauseGround, clause: EnergyClause, path: s
 }
 
 function energyOf(reading: EnergyReading, of: 'kWh' | 'kVAh', basis: ReactiveBasis, period: number): number {
-  const active = reading.activeKwh[period]!;
+  const active = reading.activeKwh(period);
   if (of === 'kWh') return active;
   const reactive = reading.reactiveKvarh(basis, period);
   return Math.sqrt(active * active + reactive * reactive);
@@ -111,20 +111,20 @@ export function energyByFactorClause(ground: ClauseGround, clause: EnergyByFacto
   const basis = clause.reactive ?? 'lagging';
   const pct = scalePct(clause.scale);
   const pctOf = (period: number): number =>
-    pct(energyPowerFactor(reading.activeKwh[period]!, reading.reactiveKvarh(basis, period)));
+    pct(energyPowerFactor(reading.activeKwh(period), reading.reactiveKvarh(basis, period)));
   return {
     unit: 'kWh',
     carries: false,
     price(run) {
       let quantity = 0;
       for (let period = 0; period < reading.periods; period++) {
-        quantity += (reading.activeKwh[period]! * pctOf(period)) / 100;
+        quantity += (reading.activeKwh(period) * pctOf(period)) / 100;
       }
       run.quantity = quantity;
       if (run.say) {
         run.working =
           reading.periods === 1
-            ? `${product(reading.activeKwh[0]!, pctOf(0))} / 100 · ${put(clause.pricePerUnit)}`
+            ? `${product(reading.activeKwh(0), pctOf(0))} / 100 · ${put(clause.pricePerUnit)}`
             : product(quantity, clause.pricePerUnit);
       }
       return quantity * clause.pricePerUnit;
@@ -176,7 +176,7 @@ export function kvarhClause(ground: ClauseGround, clause: KvarhBeyondRatioClause
             : excessWorking(
                 slices,
                 tiers,
-                { kvarh: only.reactiveKvarh(basis, 0), kwh: only.activeKwh[0]! },
+                { kvarh: only.reactiveKvarh(basis, 0), kwh: only.activeKwh(0) },
                 clause.cumulative !== false,
               );
       }
@@ -193,7 +193,7 @@ function excessesInto(
   { tiers, basis, excessInto }: { tiers: readonly Tier[]; basis: ReactiveBasis; excessInto: ExcessInto },
 ): void {
   for (let period = 0; period < reading.periods; period++) {
-    excessInto(slices, tiers, reading.reactiveKvarh(basis, period), reading.activeKwh[period]!);
+    excessInto(slices, tiers, reading.reactiveKvarh(basis, period), reading.activeKwh(period));
   }
 }
 

@@ -1,56 +1,79 @@
-import type { Grouping } from './grouping.js';
+import type { EnergyShape } from './grouping.js';
 import type { MeterColumns } from './meter-columns.js';
 import type { ReactiveBasis } from './papers.js';
 import { reactiveOf } from './reactive-basis.js';
-import type { Selection } from './selection.js';
 
-/** Energies of a selection's intervals in one month, period by period; filled again for each month and meter. */
+/**
+ * Energies of a selection's intervals in one month, period by period; filled again for each month and meter. A column is
+ * added up when it is first asked for: most clauses look at one or two of them.
+ */
 export class EnergyReading {
-  /** Σ max(P, 0)·h of each period [kWh] */
-  readonly activeKwh: Float64Array;
-  /** [kvarh] */
-  readonly laggingKvarh: Float64Array;
-  /** [kvarh] */
-  readonly leadingKvarh: Float64Array;
   /** periods of the month read */
   periods = 0;
-  /** intervals of the month read */
-  intervals = 0;
-  readonly #selection: Selection;
-  readonly #grouping: Grouping | null;
-  readonly #hours: number;
+  readonly #shape: EnergyShape;
+  readonly #activeKwh: Float64Array;
+  readonly #laggingKvarh: Float64Array;
+  readonly #leadingKvarh: Float64Array;
+  /** E_p of whole months of the steady column, NaN where it is not known yet [kWh] */
+  readonly #steadyKwh: Float64Array;
+  #m = 0;
+  #columns: MeterColumns | null = null;
+  #hasActive = true;
+  #hasLagging = true;
+  #hasLeading = true;
 
-  /**
-   * @param selection the intervals
-   * @param grouping their periods, null for whole months
-   * @param hours length of an interval [h]
-   */
-  constructor(selection: Selection, grouping: Grouping | null, hours: number) {
-    this.#selection = selection;
-    this.#grouping = grouping;
-    this.#hours = hours;
-    const most = grouping?.most ?? 1;
-    this.activeKwh = new Float64Array(most);
-    this.laggingKvarh = new Float64Array(most);
-    this.leadingKvarh = new Float64Array(most);
+  /** @param shape intervals, periods, hours */
+  constructor(shape: EnergyShape) {
+    this.#shape = shape;
+    const most = shape.grouping?.most ?? 1;
+    this.#activeKwh = new Float64Array(most);
+    this.#laggingKvarh = new Float64Array(most);
+    this.#leadingKvarh = new Float64Array(most);
+    this.#steadyKwh = new Float64Array(shape.selection.monthFrom.length - 1).fill(Number.NaN);
   }
 
   /**
-   * Adds up one month.
+   * @param period index of the period
+   * @returns Σ max(P, 0)·h [kWh]
+   */
+  activeKwh(period: number): number {
+    if (!this.#hasActive) this.#formActive(this.#columns!.activeKw);
+    this.#hasActive = true;
+    return this.#activeKwh[period]!;
+  }
+
+  /**
+   * @param period index of the period
+   * @returns [kvarh]
+   */
+  laggingKvarh(period: number): number {
+    if (!this.#hasLagging) this.#sumInto(this.#laggingKvarh, this.#columns!.laggingKvar);
+    this.#hasLagging = true;
+    return this.#laggingKvarh[period]!;
+  }
+
+  /**
+   * @param period index of the period
+   * @returns [kvarh]
+   */
+  leadingKvarh(period: number): number {
+    if (!this.#hasLeading) this.#sumInto(this.#leadingKvarh, this.#columns!.leadingKvar);
+    this.#hasLeading = true;
+    return this.#leadingKvarh[period]!;
+  }
+
+  /**
+   * Turns to one month.
    * @param m index of the month
-   * @param columns the meter, length n
+   * @param columns the meter, length n; the month's intervals stay as they are until the next month is read
    */
   read(m: number, columns: MeterColumns): void {
-    const from = this.#selection.monthFrom[m]!;
-    const end = this.#selection.monthFrom[m + 1]!;
-    this.intervals = end - from;
-    if (this.#grouping === null) {
-      this.periods = 1;
-      this.#readMonth(from, end, columns);
-    } else {
-      this.periods = this.#grouping.sizes[m]!.length;
-      this.#readPeriods(from, end, columns, this.#grouping.groupOf);
-    }
+    this.#m = m;
+    this.#columns = columns;
+    this.periods = this.#shape.grouping === null ? 1 : this.#shape.grouping.sizes[m]!.length;
+    this.#hasActive = false;
+    this.#hasLagging = false;
+    this.#hasLeading = false;
   }
 
   /**
@@ -61,49 +84,61 @@ export class EnergyReading {
    * @param leadingKvarh [kvarh]
    */
   take(m: number, activeKwh: number, laggingKvarh: number, leadingKvarh: number): void {
-    this.intervals = this.#selection.monthFrom[m + 1]! - this.#selection.monthFrom[m]!;
+    this.#m = m;
     this.periods = 1;
-    this.activeKwh[0] = activeKwh;
-    this.laggingKvarh[0] = laggingKvarh;
-    this.leadingKvarh[0] = leadingKvarh;
+    this.#activeKwh[0] = activeKwh;
+    this.#laggingKvarh[0] = laggingKvarh;
+    this.#leadingKvarh[0] = leadingKvarh;
+    this.#hasActive = true;
+    this.#hasLagging = true;
+    this.#hasLeading = true;
   }
 
-  #readMonth(from: number, end: number, { activeKw, laggingKvar, leadingKvar }: MeterColumns): void {
-    const { intervals } = this.#selection;
-    let active = 0;
-    let lagging = 0;
-    let leading = 0;
-    for (let k = from; k < end; k++) {
-      const i = intervals[k]!;
-      const kw = activeKw[i]!;
-      if (kw > 0) active += kw;
-      lagging += laggingKvar[i]!;
-      leading += leadingKvar[i]!;
-    }
-    this.activeKwh[0] = active * this.#hours;
-    this.laggingKvarh[0] = lagging * this.#hours;
-    this.leadingKvarh[0] = leading * this.#hours;
+  #formActive(activeKw: Float64Array): void {
+    const { grouping, steadyKw } = this.#shape;
+    const isKept = grouping === null && activeKw === steadyKw;
+    const kept = isKept ? this.#steadyKwh[this.#m]! : Number.NaN;
+    if (Number.isNaN(kept)) this.#sumPositiveInto(this.#activeKwh, activeKw);
+    else this.#activeKwh[0] = kept;
+    if (isKept) this.#steadyKwh[this.#m] = this.#activeKwh[0]!;
   }
 
-  #readPeriods(from: number, end: number, columns: MeterColumns, groupOf: Int32Array): void {
-    const { intervals } = this.#selection;
-    const { activeKwh, laggingKvarh, leadingKvarh } = this;
-    activeKwh.fill(0, 0, this.periods);
-    laggingKvarh.fill(0, 0, this.periods);
-    leadingKvarh.fill(0, 0, this.periods);
+  #sumPositiveInto(sums: Float64Array, column: Float64Array): void {
+    const { selection, grouping, hours } = this.#shape;
+    const { intervals, monthFrom } = selection;
+    const [from, end] = [monthFrom[this.#m]!, monthFrom[this.#m + 1]!];
+    if (grouping === null) {
+      let sum = 0;
+      for (let k = from; k < end; k++) {
+        const kw = column[intervals[k]!]!;
+        if (kw > 0) sum += kw;
+      }
+      sums[0] = sum * hours;
+      return;
+    }
+    const { groupOf } = grouping;
+    sums.fill(0, 0, this.periods);
     for (let k = from; k < end; k++) {
-      const i = intervals[k]!;
-      const period = groupOf[k]!;
-      const kw = columns.activeKw[i]!;
-      if (kw > 0) activeKwh[period]! += kw;
-      laggingKvarh[period]! += columns.laggingKvar[i]!;
-      leadingKvarh[period]! += columns.leadingKvar[i]!;
+      const kw = column[intervals[k]!]!;
+      if (kw > 0) sums[groupOf[k]!]! += kw;
     }
-    for (let period = 0; period < this.periods; period++) {
-      activeKwh[period]! *= this.#hours;
-      laggingKvarh[period]! *= this.#hours;
-      leadingKvarh[period]! *= this.#hours;
+    for (let period = 0; period < this.periods; period++) sums[period]! *= hours;
+  }
+
+  #sumInto(sums: Float64Array, column: Float64Array): void {
+    const { selection, grouping, hours } = this.#shape;
+    const { intervals, monthFrom } = selection;
+    const [from, end] = [monthFrom[this.#m]!, monthFrom[this.#m + 1]!];
+    if (grouping === null) {
+      let sum = 0;
+      for (let k = from; k < end; k++) sum += column[intervals[k]!]!;
+      sums[0] = sum * hours;
+      return;
     }
+    const { groupOf } = grouping;
+    sums.fill(0, 0, this.periods);
+    for (let k = from; k < end; k++) sums[groupOf[k]!]! += column[intervals[k]!]!;
+    for (let period = 0; period < this.periods; period++) sums[period]! *= hours;
   }
 
   /**
@@ -113,6 +148,8 @@ export class EnergyReading {
    * @returns E_q [kvarh]
    */
   reactiveKvarh(basis: ReactiveBasis, period: number): number {
-    return reactiveOf(basis, this.laggingKvarh[period]!, this.leadingKvarh[period]!);
+    if (basis === 'lagging') return this.laggingKvarh(period);
+    if (basis === 'leading') return this.leadingKvarh(period);
+    return reactiveOf(basis, this.laggingKvarh(period), this.leadingKvarh(period));
   }
 }

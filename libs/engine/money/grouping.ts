@@ -13,6 +13,17 @@ export interface Grouping {
   most: number;
 }
 
+/** What energies are added up of. */
+export interface EnergyShape {
+  selection: Selection;
+  /** periods of the selection, null for whole months */
+  grouping: Grouping | null;
+  /** length of an interval [h] */
+  hours: number;
+  /** the record's own active power, which no bank at its bus moves: its sums are kept; null where there is none [kW] */
+  steadyKw: Float64Array | null;
+}
+
 /** The periods a clause may be formed over. */
 export type Period = 'month' | 'day' | 'hour' | 'interval';
 
@@ -95,6 +106,17 @@ export class Groupings {
    */
   days(selection: Selection): Grouping {
     return kept(this.#periods, `day ${selection.key}`, () => periods(this.calendar, selection, 'day'));
+  }
+
+  /**
+   * What the energies of a selection are added up of.
+   * @param selection the intervals
+   * @param per length of a period
+   * @returns intervals, periods, hours
+   */
+  energyShape(selection: Selection, per: Period): EnergyShape {
+    const { intervalS, steadyKw } = this.calendar;
+    return { selection, grouping: this.periods(selection, per), hours: intervalS / 3600, steadyKw };
   }
 
   /**

@@ -46,10 +46,10 @@ export function powerFactorBy(rule: SettledFactorRule, readings: FactorReadings,
 
 function unrounded(rule: SettledFactorRule, { energy, demand }: FactorReadings, period: number): number | null {
   if (rule.basis === 'energy') {
-    return energyPowerFactor(energy.activeKwh[period]!, energy.reactiveKvarh(rule.reactive, period));
+    return energyPowerFactor(energy.activeKwh(period), energy.reactiveKvarh(rule.reactive, period));
   }
   if (demand === null) throw new Error('the rule looks at demand');
-  const maxKw = demand.maxKw[period]!;
+  const maxKw = demand.maxKw(period);
   if (rule.basis === 'atMaxKw') return energyPowerFactor(maxKw, demand.kvarAtMaxKw(rule.reactive, period));
-  return maxKw <= 0 ? null : maxKw / demand.maxKva[period]!;
+  return maxKw <= 0 ? null : maxKw / demand.maxKva(period);
 }

@@ -11,6 +11,8 @@ export interface RecordSpan {
   firstS: number;
   /** end of the last grid slot, exclusive [s] */
   endS: number;
+  /** active power as metered, length n, where the record has it: what is added up of it is kept [kW] */
+  activeKw?: Float64Array;
 }
 
 /** One local calendar month that holds intervals of the record. */
@@ -37,6 +39,8 @@ export interface TariffCalendar {
   localS: Float64Array;
   /** 1 Monday … 7 Sunday, 8 a listed holiday */
   dayKind: Uint8Array;
+  /** active power as metered, null where it is not known; no bank at the bus moves it [kW] */
+  steadyKw: Float64Array | null;
 }
 
 /** Seconds of a calendar day. */
@@ -71,7 +75,7 @@ export function tariffCalendar(span: RecordSpan, zone: ZoneTable, holidays: read
     dayKind[i] = kind;
   }
   for (const [k, month] of months.entries()) month.end = months[k + 1]?.from ?? n;
-  return { intervalS: span.intervalS, months, localS, dayKind };
+  return { intervalS: span.intervalS, months, localS, dayKind, steadyKw: span.activeKw ?? null };
 }
 
 // A month that has begun lasts until the next one does, whatever a clock set back over midnight says.

@@ -5,7 +5,7 @@ import type { MeterColumns } from './meter-columns.js';
 import type { ReactiveBasis } from './papers.js';
 import type { Selection } from './selection.js';
 
-/** The readings a tariff's clauses ask for, each formed once a month however many clauses use it. */
+/** The readings a tariff's clauses ask for, each formed once a month however many clauses use it, and only what is asked for. */
 export class TariffReadings {
   readonly #groupings: Groupings;
   readonly #energies = new Map<string, EnergyReading>();
@@ -26,8 +26,7 @@ export class TariffReadings {
     const key = `${per} ${selection.key}`;
     const known = this.#energies.get(key);
     if (known !== undefined) return known;
-    const groupings = this.#groupings;
-    const made = new EnergyReading(selection, groupings.periods(selection, per), groupings.calendar.intervalS / 3600);
+    const made = new EnergyReading(this.#groupings.energyShape(selection, per));
     this.#energies.set(key, made);
     return made;
   }
@@ -51,9 +50,9 @@ export class TariffReadings {
   }
 
   /**
-   * Forms every reading for one month.
+   * Turns every reading to one month.
    * @param m index of the month
-   * @param columns the meter, length n
+   * @param columns the meter, length n; the month's intervals stay as they are until the next month is read
    */
   read(m: number, columns: MeterColumns): void {
     for (const reading of this.#energies.values()) reading.read(m, columns);

@@ -36,36 +36,30 @@ export function meterAfter(record: LoadRecord, load: BusLoad, connectedKvar: Flo
 
 /**
  * The meter's columns after the bank, for some of the intervals.
- * @param after receives them, each at its own place, length n
+ * @param after receives them, each at its own place, length n; its columns may be the record's own, where those may change
  * @param given record, load and connected kvar, each of length n
  * @param from first interval
  * @param end the interval to stop before
  * @throws InputProblem where the transformers can't carry an interval
  * @source method-requirement
  */
-export function meterAfterInto(
-  after: MeterAfter,
-  given: { record: LoadRecord; load: BusLoad; connectedKvar: Float64Array },
-  from: number,
-  end: number,
-): void {
+export function meterAfterInto(after: MeterAfter, given: MeteredBefore, from: number, end: number): void {
   const { record, load, connectedKvar } = given;
+  if (load.metering.at === 'bus') {
+    meterAtBusInto(after, given, from, end);
+    return;
+  }
   const { activeKw, laggingKvar, leadingKvar } = after;
-  const passage = load.metering.at === 'primary' ? load.metering.passage : null;
+  const { passage } = load.metering;
   const { laggingKvar: laggingBefore, leadingKvar: leadingBefore } = record;
   for (let i = from; i < end; i++) {
     const lagging = laggingBefore[i]!;
     const leading = leadingBefore[i]!;
-    let kw = record.activeKw[i]!;
-    let netKvar = load.reactiveKvar[i]! - connectedKvar[i]!;
-    if (passage !== null) {
-      const primary = primaryFromBus(passage, load.activeKw[i]!, netKvar);
-      if (primary === null) throw cannotCarry(record.beginS[i]!, load.activeKw[i]!, netKvar);
-      kw = primary.activeKw;
-      netKvar = primary.reactiveKvar;
-    }
-    const fall = lagging - leading - netKvar;
-    activeKw[i] = kw;
+    const netKvar = load.reactiveKvar[i]! - connectedKvar[i]!;
+    const primary = primaryFromBus(passage, load.activeKw[i]!, netKvar);
+    if (primary === null) throw cannotCarry(record.beginS[i]!, load.activeKw[i]!, netKvar);
+    const fall = lagging - leading - primary.reactiveKvar;
+    activeKw[i] = primary.activeKw;
     if (fall >= 0) {
       laggingKvar[i] = Math.max(lagging - fall, 0);
       leadingKvar[i] = leading + Math.max(fall - lagging, 0);
@@ -73,5 +67,35 @@ export function meterAfterInto(
       leadingKvar[i] = Math.max(leading + fall, 0);
       laggingKvar[i] = lagging + Math.max(-fall - leading, 0);
     }
+  }
+}
+
+interface MeteredBefore {
+  record: LoadRecord;
+  load: BusLoad;
+  connectedKvar: Float64Array;
+}
+
+// At the bus the active power stays: where it is the record's own column, nothing is written. A search passes a record some
+// hundred times.
+function meterAtBusInto(
+  after: MeterAfter,
+  { record, load, connectedKvar }: MeteredBefore,
+  from: number,
+  end: number,
+): void {
+  const { laggingKvar: laggingBefore, leadingKvar: leadingBefore, activeKw } = record;
+  const { reactiveKvar } = load;
+  const { laggingKvar, leadingKvar } = after;
+  if (after.activeKw !== activeKw) for (let i = from; i < end; i++) after.activeKw[i] = activeKw[i]!;
+  for (let i = from; i < end; i++) {
+    const lagging = laggingBefore[i]!;
+    const leading = leadingBefore[i]!;
+    const fall = lagging - leading - (reactiveKvar[i]! - connectedKvar[i]!);
+    const left = fall >= 0 ? lagging - fall : leading + fall;
+    const kept = Math.max(left, 0);
+    const over = kept - left;
+    laggingKvar[i] = fall >= 0 ? kept : lagging + over;
+    leadingKvar[i] = fall >= 0 ? leading + over : kept;
   }
 }

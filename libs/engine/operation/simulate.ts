@@ -30,7 +30,7 @@ export function simulate(
   bank: SwitchedBank,
   control: Control,
   view: ControllerView,
-  connectedKvar = new Float64Array(view.beginS.length),
+  connectedKvar: Float64Array = new Float64Array(view.beginS.length),
 ): SwitchingRun {
   const plain = view.voltageScale === null && view.standby === null;
   if (plain && bank.classes.length === 1 && control.mode === 'nearestLevel') {

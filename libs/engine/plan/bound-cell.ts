@@ -1,9 +1,10 @@
-import { billRange, type RangedTariff } from '../money/bill-range.js';
+import { billRangeOf, type RangedTariff } from '../money/bill-range.js';
 import type { MeterBox } from '../money/meter-box.js';
 import type { ControlReach } from '../operation/control-reach.js';
 import { type MeterAfter, meterAfterInto } from '../operation/meter-after.js';
 import { energyPowerFactor } from '../quantity/power-factor.js';
 import { primaryFromBus, type TransformerPassage } from '../supply/transformer-passage.js';
+import { ActiveSums } from './active-sums.js';
 import { leastMoves } from './least-moves.js';
 import type { Study } from './study.js';
 
@@ -42,6 +43,10 @@ export class CellBounds {
   /** meters at both ends of the connected kvar, behind transformers */
   readonly #least: MeterAfter;
   readonly #most: MeterAfter;
+  readonly #active: ActiveSums;
+  /** least and most connected in the interval before the month that is formed [kvar] */
+  #leastBefore = 0;
+  #mostBefore = 0;
 
   /**
    * @param study site and record
@@ -52,6 +57,7 @@ export class CellBounds {
     const column = (): Float64Array => new Float64Array(n);
     this.#study = study;
     this.#ranged = ranged;
+    this.#active = new ActiveSums(study.record.activeKw, ranged.prepared.calendar.months.length);
     this.#leastConnectedKvar = column();
     this.#mostConnectedKvar = column();
     const behind = study.load.metering.at === 'primary';
@@ -78,72 +84,66 @@ export class CellBounds {
   }
 
   /**
-   * The cell of a size.
+   * The cell of a size. It is formed month by month, so that what is written and read again stays near the processor.
    * @param size banks it is for
    * @returns bounds by month
    * @throws InputProblem where the transformers can't carry an interval
    * @source derived: with more connected the meter lags less and leads more, whatever the controller does
    */
   cell(size: CellSize): BoundCell {
-    const { record, load } = this.#study;
-    const n = record.beginS.length;
-    this.#connectedInto(size);
-    if (load.metering.at === 'bus') {
-      this.#atBusInto(this.#least, this.#leastConnectedKvar);
-      this.#atBusInto(this.#most, this.#mostConnectedKvar);
-    } else {
-      meterAfterInto(this.#least, { record, load, connectedKvar: this.#leastConnectedKvar }, 0, n);
-      meterAfterInto(this.#most, { record, load, connectedKvar: this.#mostConnectedKvar }, 0, n);
-      this.#activeInto(load.metering.passage);
-    }
-    const leastBill = Float64Array.from(billRange(this.#ranged, this.#box), ({ lo }) => lo);
-    return { leastBill, ...this.#monthSums(size) };
+    const cell: BoundCell = {
+      leastBill: new Float64Array(0),
+      leastKvarh: new Float64Array(this.#ranged.prepared.calendar.months.length),
+      leastMovesKvar: [],
+      mostLowestFactor: 1,
+    };
+    this.#leastBefore = 0;
+    this.#mostBefore = 0;
+    const bills = billRangeOf(this.#ranged, (m) => {
+      this.#monthInto(size, m);
+      this.#ranged.boxes.read(m, this.#box);
+      this.#sumInto(cell, size, m);
+    });
+    return { ...cell, leastBill: Float64Array.from(bills, ({ lo }) => lo) };
   }
 
-  #connectedInto(size: CellSize): void {
+  #monthInto(size: CellSize, m: number): void {
+    const { record, load } = this.#study;
+    const { from, end } = this.#ranged.prepared.calendar.months[m]!;
+    this.#connectedInto(size, from, end);
+    meterAfterInto(this.#least, { record, load, connectedKvar: this.#leastConnectedKvar }, from, end);
+    meterAfterInto(this.#most, { record, load, connectedKvar: this.#mostConnectedKvar }, from, end);
+    if (load.metering.at === 'primary') this.#activeInto(load.metering.passage, from, end);
+  }
+
+  #connectedInto(size: CellSize, from: number, end: number): void {
     const { voltageScale } = this.#study;
     const [least, most] = [this.#leastConnectedKvar, this.#mostConnectedKvar];
     const { mostKvar, leastKvar, wantedKvar, leastWantedKvar, reach } = size;
     if (wantedKvar === null || leastWantedKvar === null) {
-      least.fill(0);
-      most.fill(mostKvar);
+      least.fill(0, from, end);
+      most.fill(mostKvar, from, end);
     } else {
       const { aboveKvar, belowKvar, paceKvar } = reach;
-      let [low, high] = [0, 0];
-      for (let i = 0; i < most.length; i++) {
+      let [low, high] = [this.#leastBefore, this.#mostBefore];
+      for (let i = from; i < end; i++) {
         high = Math.max(0, Math.min(mostKvar, Math.max(wantedKvar[i]! + aboveKvar, high - paceKvar)));
         low = Math.max(0, Math.min(leastKvar, leastWantedKvar[i]! - belowKvar, low + paceKvar));
         most[i] = high;
         least[i] = low;
       }
+      [this.#leastBefore, this.#mostBefore] = [low, high];
     }
     // a reach is finite only where no voltage scales the levels
-    if (voltageScale !== null) for (let i = 0; i < most.length; i++) most[i]! *= voltageScale[i]!;
-  }
-
-  // `meterAfterInto` at the bus, where the active power stays: this runs a hundred times before anything is simulated.
-  #atBusInto(after: MeterAfter, connectedKvar: Float64Array): void {
-    const { laggingKvar, leadingKvar } = this.#study.record;
-    const { reactiveKvar } = this.#study.load;
-    const [afterLagging, afterLeading] = [after.laggingKvar, after.leadingKvar];
-    for (let i = 0; i < connectedKvar.length; i++) {
-      const lagging = laggingKvar[i]!;
-      const leading = leadingKvar[i]!;
-      const fall = lagging - leading - (reactiveKvar[i]! - connectedKvar[i]!);
-      const left = fall >= 0 ? lagging - fall : leading + fall;
-      const kept = Math.max(left, 0);
-      const over = kept - left;
-      afterLagging[i] = fall >= 0 ? kept : lagging + over;
-      afterLeading[i] = fall >= 0 ? leading + over : kept;
-    }
+    if (voltageScale !== null) for (let i = from; i < end; i++) most[i]! *= voltageScale[i]!;
   }
 
   // Behind transformers their loss is convex in the connected kvar: most at an end, and no less than what the active
   // power and the least net kvar draw at the highest voltage of the range.
-  #activeInto(passage: TransformerPassage): void {
+  #activeInto(passage: TransformerPassage, from: number, end: number): void {
     const { load } = this.#study;
     const [lowKw, highKw] = [this.#box.low.activeKw, this.#box.high.activeKw];
-    for (let i = 0; i < highKw.length; i++) {
+    for (let i = from; i < end; i++) {
       const p = load.activeKw[i]!;
       const q = load.reactiveKvar[i]!;
       highKw[i] = Math.max(this.#least.activeKw[i]!, this.#most.activeKw[i]!);
@@ -155,28 +155,21 @@ export class CellBounds {
   }
 
   // kvarh that are connected at the least; the least lagging beside the most active energy.
-  #monthSums(size: CellSize): Omit<BoundCell, 'leastBill'> {
-    const { months } = this.#ranged.prepared.calendar;
+  #sumInto(cell: BoundCell, size: CellSize, m: number): void {
+    const { from, end } = this.#ranged.prepared.calendar.months[m]!;
+    const [least, most] = [this.#leastConnectedKvar, this.#mostConnectedKvar];
     const { activeKw } = this.#box.high;
     const { laggingKvar } = this.#box.low;
-    const hours = this.#study.record.intervalS / 3600;
-    const leastKvarh = new Float64Array(months.length);
-    const leastMovesKvar: number[][] = [];
-    const isHeld = size.wantedKvar !== null && Number.isFinite(size.reach.belowKvar);
-    let mostLowestFactor = 1;
-    for (const [m, { from, end }] of months.entries()) {
-      let kvar = 0;
-      let active = 0;
-      let lagging = 0;
-      for (let i = from; i < end; i++) {
-        kvar += this.#leastConnectedKvar[i]!;
-        active += Math.max(activeKw[i]!, 0);
-        lagging += laggingKvar[i]!;
-      }
-      leastKvarh[m] = kvar * hours;
-      leastMovesKvar[m] = isHeld ? leastMoves(this.#leastConnectedKvar, this.#mostConnectedKvar, from, end) : [];
-      mostLowestFactor = Math.min(mostLowestFactor, energyPowerFactor(active, lagging) ?? 1);
+    let kvar = 0;
+    let lagging = 0;
+    for (let i = from; i < end; i++) {
+      kvar += least[i]!;
+      lagging += laggingKvar[i]!;
     }
-    return { leastKvarh, leastMovesKvar, mostLowestFactor };
+    const active = this.#active.sum(m, activeKw, from, end);
+    const isHeld = size.wantedKvar !== null && Number.isFinite(size.reach.belowKvar);
+    cell.leastKvarh[m] = kvar * (this.#study.record.intervalS / 3600);
+    cell.leastMovesKvar[m] = isHeld ? leastMoves(least, most, from, end) : [];
+    cell.mostLowestFactor = Math.min(cell.mostLowestFactor, energyPowerFactor(active, lagging) ?? 1);
   }
 }

@@ -7,6 +7,7 @@ import { meterAfterInto } from '../operation/meter-after.js';
 import { Simulation } from '../operation/simulate.js';
 import { switchedBank } from '../operation/switched-bank.js';
 import { energyPowerFactor } from '../quantity/power-factor.js';
+import type { ActiveSums } from './active-sums.js';
 import type { RunColumns } from './run-columns.js';
 import type { Study } from './study.js';
 
@@ -15,6 +16,7 @@ export interface RunGround {
   study: Study;
   prepared: PreparedTariff;
   columns: RunColumns;
+  active: ActiveSums;
 }
 
 /** A bank and its controller, simulated and priced month by month; what a month leaves is kept. */
@@ -94,12 +96,9 @@ export class CandidateRun {
   #takeTarget(m: number, from: number, end: number): void {
     const { study, columns } = this.#ground;
     const { activeKw, laggingKvar } = columns.meter;
-    let active = 0;
+    const active = this.#ground.active.sum(m, activeKw, from, end);
     let lagging = 0;
-    for (let i = from; i < end; i++) {
-      active += Math.max(activeKw[i]!, 0);
-      lagging += laggingKvar[i]!;
-    }
+    for (let i = from; i < end; i++) lagging += laggingKvar[i]!;
     this.laggingKvarh[m] = (this.laggingKvarh[m - 1] ?? 0) + (lagging * study.record.intervalS) / 3600;
     const factor = energyPowerFactor(active, lagging);
     this.lowestFactor = Math.min(this.lowestFactor, factor ?? 1);

@@ -9,6 +9,16 @@ export interface ChangeSearch {
 }
 
 /**
+ * The factors that are looked at before a change is closed in on.
+ * @param end the factor to stop at; 0 is reached in even steps, any other end in even steps of the logarithm
+ * @param steps how many
+ * @returns factors from 1 outwards, 1 left out
+ */
+export function evenFactors(end: number, steps: number): number[] {
+  return Array.from({ length: steps }, (_, k) => (end > 0 ? end ** ((k + 1) / steps) : 1 - (k + 1) / steps));
+}
+
+/**
  * The change nearest to a factor of 1: looked for outwards step by step, and closed in on by bisection.
  * @param valueAt what holds at a factor
  * @param present what holds at 1
@@ -22,8 +32,7 @@ export function changeTowards<T>(
   { end, steps, closedIn }: ChangeSearch,
 ): { factor: number; value: T } | null {
   let same = 1;
-  for (let step = 1; step <= steps; step++) {
-    const next = end > 0 ? end ** (step / steps) : 1 - step / steps;
+  for (const next of evenFactors(end, steps)) {
     if (valueAt(next) === present) {
       same = next;
       continue;

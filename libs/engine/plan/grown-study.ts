@@ -1,4 +1,4 @@
-import { type MeterAfter, meterAfter } from '../operation/meter-after.js';
+import { meterAfterInto } from '../operation/meter-after.js';
 import type { Study } from './study.js';
 
 /**
@@ -12,19 +12,20 @@ import type { Study } from './study.js';
  */
 export function grownStudy(study: Study, factor: number): Study {
   const { activeKw, laggingKvar, leadingKvar } = study.record;
+  const grownKw = scaled(activeKw, factor);
   const load = {
     ...study.load,
-    activeKw: scaled(study.load.activeKw, factor),
+    activeKw: study.load.activeKw === activeKw ? grownKw : scaled(study.load.activeKw, factor),
     reactiveKvar: scaled(study.load.reactiveKvar, factor),
   };
   const record = {
     ...study.record,
-    activeKw: scaled(activeKw, factor),
+    activeKw: grownKw,
     laggingKvar: scaled(laggingKvar, factor),
     leadingKvar: scaled(leadingKvar, factor),
   };
-  const meter: MeterAfter = meterAfter(record, load, oldBankKvar(study));
-  return { ...study, load, record: { ...record, ...meter } };
+  meterAfterInto(record, { record, load, connectedKvar: oldBankKvar(study) }, 0, grownKw.length);
+  return { ...study, load, record };
 }
 
 function scaled(column: Float64Array, factor: number): Float64Array {

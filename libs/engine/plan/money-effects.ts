@@ -1,8 +1,8 @@
 import type { SettledFinance } from '../money/cash-flow.js';
 import type { SavingRange } from '../money/money-result.js';
 import type { Remark } from '../problem.js';
+import { LOAD_MOVES } from './load-moves.js';
 import type { MoneyMover, WeighedWays } from './money-mover.js';
-import { LOAD_MOVES } from './money-robustness.js';
 import { weighAgain } from './weigh-again.js';
 import type { WeighedBank } from './weighed-bank.js';
 
@@ -57,7 +57,6 @@ function endsOf(code: string, { scale }: WeighedWays, way: WeighedBank, mover: M
   if (PRICE_LINES.includes(code)) return known(PRICE_MOVES.map((factor) => mover.at(way, 'costs', factor)?.npv));
   const changes = FINANCE_RANGES[code];
   if (changes === undefined) return null;
-  const { bank } = way;
-  const working = { operated: mover.operated(way), bank, kept: bank };
+  const working = mover.working(way);
   return known(changes.map((change) => weighAgain(scale, way, working, { ...scale.money.finance, ...change }).npv));
 }

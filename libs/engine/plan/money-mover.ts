@@ -2,15 +2,15 @@ import type { BreakEven, MoneyQuantity, PickChange, Recommended } from '../money
 import { InputProblem } from '../problem.js';
 import { changeTowards } from './change-towards.js';
 import { grownStudy } from './grown-study.js';
+import { COMMON_LOADS, LOAD_SEARCH, LOADS_TRIED } from './load-moves.js';
 import { withCapacitance } from './robustness.js';
 import { NEAR_VALUE } from './search.js';
-import { type Operated, operate } from './study.js';
-import { type Scale, scaleOf, type WorthAgain, weighAgain } from './weigh-again.js';
+import { type Scale, scaleOf, type Working, type WorthAgain, weighAgain, workOn } from './weigh-again.js';
 import type { WeighedBank } from './weighed-bank.js';
 
 /** Least and greatest factor that is tried. */
 const TRIED = {
-  load: { least: 0.25, most: 4 },
+  load: LOADS_TRIED,
   // capacitance is lost, not gained
   capacitance: { least: 0.6, most: 1 },
   costs: { least: 0.1, most: 10 },
@@ -22,14 +22,11 @@ export type TriedQuantity = keyof typeof TRIED;
 
 /** Every factor of load and capacitance is a simulation, those of money are arithmetic. */
 const SEARCHES = {
-  load: { steps: 2, closedIn: 1e-2 },
+  load: LOAD_SEARCH,
   capacitance: { steps: 1, closedIn: 1e-2 },
   costs: { steps: 20, closedIn: 1e-6 },
   tariff: { steps: 20, closedIn: 1e-6 },
 } satisfies Record<TriedQuantity, { steps: number; closedIn: number }>;
-
-/** Intervals of moved records that are kept for the next way: all factors of quarter hours, the last three of minutes. */
-const KEPT_INTERVALS = 2_000_000;
 
 /** Ways and the record they are weighed on. */
 export interface WeighedWays {
@@ -43,9 +40,8 @@ export interface WeighedWays {
 export class MoneyMover {
   readonly #weighed: WeighedWays;
   readonly #known = new Map<string, WorthAgain | null>();
-  readonly #operated = new Map<Recommended, Operated>();
+  readonly #working = new Map<Recommended, Working>();
   readonly #present = new Map<Recommended, WorthAgain>();
-  readonly #grown = new Map<number, Scale | null>();
 
   /** @param weighed ways and record */
   constructor(weighed: WeighedWays) {
@@ -55,13 +51,13 @@ export class MoneyMover {
   /**
    * A way's bank over the record as it is.
    * @param way a way with a bank
-   * @returns the simulation
+   * @returns how it works
    */
-  operated(way: WeighedBank): Operated {
-    const known = this.#operated.get(way.name);
+  working(way: WeighedBank): Working {
+    const known = this.#working.get(way.name);
     if (known !== undefined) return known;
-    const made = operate(this.#weighed.scale.study, way.bank, way.control);
-    this.#operated.set(way.name, made);
+    const made = workOn(this.#weighed.scale, way.bank, way.control);
+    this.#working.set(way.name, made);
     return made;
   }
 
@@ -76,7 +72,7 @@ export class MoneyMover {
     if (bank.groups.length === 0) return NOTHING;
     const known = this.#present.get(way.name);
     if (known !== undefined) return known;
-    const made = weighAgain(this.#weighed.scale, way, { operated: this.operated(way), bank, kept: bank });
+    const made = weighAgain(this.#weighed.scale, way, this.working(way));
     this.#present.set(way.name, made);
     return made;
   }
@@ -92,11 +88,11 @@ export class MoneyMover {
   at(way: WeighedBank, quantity: TriedQuantity, factor: number): WorthAgain | null {
     if (way.bank.groups.length === 0 || factor === 1) return this.present(way);
     if (quantity === 'costs' || quantity === 'tariff') return this.#priced(way, quantity, factor);
-    const key = `${way.name} ${quantity} ${factor}`;
-    const known = this.#known.get(key);
+    const known = this.#known.get(keyOf(way, quantity, factor));
     if (known !== undefined) return known;
-    const found = quantity === 'load' ? this.#loaded(way, factor) : this.#aged(way, factor);
-    this.#known.set(key, found);
+    if (quantity === 'load') return this.#loaded(way, factor);
+    const found = this.#aged(way, factor);
+    this.#known.set(keyOf(way, quantity, factor), found);
     return found;
   }
 
@@ -112,32 +108,17 @@ export class MoneyMover {
   }
 
   #loaded(way: WeighedBank, factor: number): WorthAgain | null {
-    const { bank, control } = way;
-    try {
-      const scale = this.#scaleAt(factor);
-      return scale && weighAgain(scale, way, { operated: operate(scale.study, bank, control), bank, kept: bank });
-    } catch (problem) {
-      return nullWhereTooLarge(problem);
-    }
-  }
-
-  #scaleAt(factor: number): Scale | null {
-    const { scale } = this.#weighed;
-    const known = this.#grown.get(factor);
-    if (known !== undefined) return known;
-    const made = grownScale(scale, factor);
-    const [oldest] = this.#grown.keys();
-    const room = KEPT_INTERVALS / scale.study.record.beginS.length;
-    if (oldest !== undefined && this.#grown.size + 1 > room) this.#grown.delete(oldest);
-    this.#grown.set(factor, made);
-    return made;
+    const { ways } = this.#weighed;
+    const asked = COMMON_LOADS.includes(factor) ? ways.filter(({ bank }) => bank.groups.length > 0) : [way];
+    const found = underLoad(this.#weighed.scale, asked, factor);
+    for (const [k, one] of asked.entries()) this.#known.set(keyOf(one, 'load', factor), found[k]!);
+    return found[asked.indexOf(way)]!;
   }
 
   #aged(way: WeighedBank, factor: number): WorthAgain | null {
     const { scale } = this.#weighed;
     const aged = withCapacitance(way.bank, factor);
-    const operated = operate(scale.study, aged, way.control);
-    return weighAgain(scale, way, { operated, bank: aged, kept: way.bank });
+    return weighAgain(scale, way, workOn(scale, aged, way.control, { kept: way.bank }));
   }
 
   /**
@@ -202,15 +183,33 @@ export class MoneyMover {
 
 const NOTHING: WorthAgain = { savingPerYear: 0, targetMet: false, gain: 0, cost: 0, npv: 0 };
 
-function grownScale({ study, money }: Scale, factor: number): Scale | null {
-  try {
-    return scaleOf(grownStudy(study, factor), money);
-  } catch (problem) {
-    return nullWhereTooLarge(problem);
-  }
+function keyOf(way: WeighedBank, quantity: TriedQuantity, factor: number): string {
+  return `${way.name} ${quantity} ${factor}`;
 }
 
-function nullWhereTooLarge(problem: unknown): null {
-  if (problem instanceof InputProblem && problem.code === 'load-too-large') return null;
-  throw problem;
+/**
+ * Ways on a record whose load is moved.
+ * @param scale the record as metered
+ * @param ways with a bank each
+ * @param factor on the load
+ * @returns their worths, null where the transformers can't carry the load
+ * @source method-robustness
+ */
+export function underLoad(
+  { study, money }: Scale,
+  ways: readonly WeighedBank[],
+  factor: number,
+): (WorthAgain | null)[] {
+  const grown = nullWhereTooLarge(() => scaleOf(grownStudy(study, factor), money));
+  if (grown === null) return ways.map(() => null);
+  return ways.map((way) => nullWhereTooLarge(() => weighAgain(grown, way, workOn(grown, way.bank, way.control))));
+}
+
+function nullWhereTooLarge<T>(work: () => T): T | null {
+  try {
+    return work();
+  } catch (problem) {
+    if (problem instanceof InputProblem && problem.code === 'load-too-large') return null;
+    throw problem;
+  }
 }

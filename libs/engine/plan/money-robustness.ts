@@ -2,14 +2,13 @@ import { firmVerdict } from '../duty/quick-judge.js';
 import { graver, type Verdict } from '../duty/rules.js';
 import type { MoneyRobustness, MovedWorth, WayRobustness } from '../money/money-result.js';
 import { basisOf, type Judged, overallVerdict } from './judge-basis.js';
+import { LOAD_MOVES } from './load-moves.js';
 import type { MoneyMover, TriedQuantity, WeighedWays } from './money-mover.js';
 import { judgeMoved, withoutStage } from './robustness.js';
 import { savingRange, worstStageOut } from './saving-range.js';
 import type { Scale, WorthAgain } from './weigh-again.js';
 import type { WeighedBank } from './weighed-bank.js';
 
-/** Load in the years to come, relative to the record's; practice. */
-export const LOAD_MOVES = [0.8, 1.2] as const;
 /** Capacitance of a new bank at the end of its life. */
 const AGED_CAPACITANCE = 0.9;
 /** Costs and tariffs as offers and years move them; practice. */

@@ -4,6 +4,7 @@ import type { Verdict } from '../duty/rules.js';
 import type { Bank } from '../layout/bank.js';
 import { bankLevels, type Level } from '../layout/levels.js';
 import { effectiveKvar, tunedOrderH } from '../layout/stage.js';
+import { type CostBasis, capitalOf } from '../money/capital.js';
 import { bankModel } from '../network/flow.js';
 import { nearestPeak } from '../network/network-check.js';
 import { PeakFinder } from '../network/peaks.js';
@@ -57,6 +58,8 @@ export interface ReactorTrial {
   worstRatio: number | null;
   /** least share of a ripple-control signal that is left with the bank in, or null where there is none */
   rippleShare: number | null;
+  /** what such a bank costs new; null without prices, or where none of them is for such a reactor */
+  capital: number | null;
   why: TrialReason;
   /** peak and order present that come too near, where that is why */
   nearPeakH: number | null;
@@ -100,6 +103,25 @@ export function reactorTrials(study: Judged, bank: Bank, control: Control, rated
       const tried = { bank: chosen ? bank : { ...bank, groups }, reactorPct, ratedV: voltage };
       return trial(study, { ...tried, chosen, filter: isFilter(reactorPct) }, control, ownKvar);
     });
+}
+
+/**
+ * The same rows with what each bank costs new. A reactor's price is that of its exact ratio, so a row whose ratio the book
+ * does not name has no capital, rather than one without its reactors.
+ * @param trials rows
+ * @param bank the bank they were tried on
+ * @param cost what it is paid from, null without prices
+ * @returns the rows
+ * @source method-money
+ */
+export function pricedTrials(trials: readonly ReactorTrial[], bank: Bank, cost: CostBasis | null): ReactorTrial[] {
+  return trials.map((row) => {
+    const { reactorPct } = row;
+    const isNamed = reactorPct === 0 || cost?.prices.reactors?.some((entry) => entry.reactorPct === reactorPct);
+    if (cost === null || isNamed !== true) return row;
+    const groups = bank.groups.map((group) => ({ ...group, reactorPct }));
+    return { ...row, capital: capitalOf({ ...bank, groups }, cost).total };
+  });
 }
 
 /**
@@ -164,6 +186,7 @@ function trial(study: Judged, { bank, ...head }: Tried, control: Control, ownKva
     worstDuty: found.worst?.name ?? null,
     worstRatio: found.worst?.ratio ?? null,
     rippleShare: share,
+    capital: null,
     ...reasonOf(study, { bank, levels, chosen: head.chosen, found, verdict, share, givesLess }),
   };
 }

@@ -9,12 +9,13 @@ export interface RunColumns {
 /**
  * Columns for runs that take turns.
  * @param n intervals of the record
+ * @param activeKw the record's own column where the meter stands at the bus: it stays as it is
  * @returns columns
  */
-export function runColumns(n: number): RunColumns {
+export function runColumns(n: number, activeKw?: Float64Array): RunColumns {
   const column = (): Float64Array => new Float64Array(n);
   return {
     connectedKvar: column(),
-    meter: { activeKw: column(), laggingKvar: column(), leadingKvar: column() },
+    meter: { activeKw: activeKw ?? column(), laggingKvar: column(), leadingKvar: column() },
   };
 }

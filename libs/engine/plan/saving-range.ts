@@ -1,9 +1,8 @@
-import type { Bank } from '../layout/bank.js';
 import type { SavingCase, SavingRange } from '../money/money-result.js';
 import type { ControllerView } from '../operation/controller-view.js';
 import { withoutStage } from './robustness.js';
-import { controllerView, type Operated, operate, type Study } from './study.js';
-import { type Scale, type Working, type WorthAgain, weighAgain } from './weigh-again.js';
+import type { Study } from './study.js';
+import { type Scale, viewOn, type WorthAgain, weighAgain, workOn } from './weigh-again.js';
 import type { WeighedBank } from './weighed-bank.js';
 
 /** One day in so many a bank is out where it is 95 % available; no multiple of a week, so that it is every weekday. */
@@ -24,8 +23,10 @@ export function savingRange(
   way: WeighedBank,
   { ideal, stageOut }: { ideal: WorthAgain; stageOut: WorthAgain },
 ): SavingRange {
-  const late = weighed(scale, way, way.bank, operatedLate(scale.study, way));
-  const available = weighed(scale, way, way.bank, operatedInPart(scale.study, way));
+  const { bank, control } = way;
+  const weighed = (view: ControllerView): WorthAgain => weighAgain(scale, way, workOn(scale, bank, control, { view }));
+  const late = weighed(lateView(viewOn(scale, control)));
+  const available = weighed(viewInPart(scale, way));
   const cases: SavingCase[] = [
     { name: 'ideal', ...told(ideal) },
     { name: 'one interval late', ...told(late) },
@@ -45,11 +46,6 @@ function told({ savingPerYear, npv }: WorthAgain): Pick<SavingCase, 'savingPerYe
   return { savingPerYear, npv };
 }
 
-function weighed(scale: Scale, way: WeighedBank, bank: Bank, operated: Operated): WorthAgain {
-  const working: Working = { operated, bank, kept: bank };
-  return weighAgain(scale, way, working);
-}
-
 /**
  * A way with one stage out for good: of each group in turn, the one that leaves the least saving.
  * @param scale record and bills
@@ -59,21 +55,15 @@ function weighed(scale: Scale, way: WeighedBank, bank: Bank, operated: Operated)
  */
 export function worstStageOut(scale: Scale, way: WeighedBank): WorthAgain {
   const found = way.bank.groups.map((_, g) => {
-    const rest = withoutStage(way.bank, g);
-    return weighed(scale, way, rest, operate(scale.study, rest, way.control));
+    return weighAgain(scale, way, workOn(scale, withoutStage(way.bank, g), way.control));
   });
   return found.reduce((worst, one) => (one.savingPerYear < worst.savingPerYear ? one : worst));
 }
 
-// What is decided at the beginning of an interval rests on the last averages there are; at the first there are none, and
-// nothing is done. A standby contact is no decision and acts at once.
-function operatedLate(study: Study, { bank, control }: WeighedBank): Operated {
-  const view = controllerView(study, control.setPointPowerFactor);
-  return operate(study, bank, control, lateView(view));
-}
-
 /**
- * What a controller sees that decides on the interval before.
+ * What a controller sees that decides on the interval before. What is decided at the beginning of an interval rests on the
+ * last averages there are; at the first there are none, and nothing is done. A standby contact is no decision and acts at
+ * once.
  * @param view the interval's own averages, length n
  * @returns the same one interval later
  * @source derived
@@ -94,10 +84,12 @@ function later(column: Float64Array, first: number): Float64Array {
 }
 
 // Held off by the contact a standby supply has; a stage that is never switched has none, and stays in.
-function operatedInPart(study: Study, { bank, control }: WeighedBank): Operated {
-  const view = controllerView(study, control.setPointPowerFactor);
-  const standby = outColumn(study).map((isOut, i) => Math.max(isOut, view.standby?.[i] ?? 0));
-  return operate(study, bank, control, { ...view, standby });
+function viewInPart(scale: Scale, { control }: WeighedBank): ControllerView {
+  const view = viewOn(scale, control);
+  const standby = outColumn(scale.study);
+  if (view.standby !== null)
+    for (let i = 0; i < standby.length; i++) standby[i] = Math.max(standby[i]!, view.standby[i]!);
+  return { ...view, standby };
 }
 
 /**

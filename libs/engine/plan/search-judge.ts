@@ -9,18 +9,18 @@ import { presentWeights } from '../money/present-weights.js';
 import type { Control } from '../operation/control.js';
 import type { ControllerPace } from '../operation/control-reach.js';
 import type { ControllerView } from '../operation/controller-view.js';
+import { ActiveSums } from './active-sums.js';
 import { CandidateRun, type RunGround } from './candidate-run.js';
 import { BuildWorth, lifeCost, type WorthGround } from './candidate-worth.js';
 import { ClearScreen } from './clear-screen.js';
 import { basisOf, judge, overallVerdict } from './judge-basis.js';
 import { KeptKvarh } from './kept-kvarh.js';
 import type { MoneyStudy } from './money-study.js';
-import { runColumns } from './run-columns.js';
 import type { BoundWidth, Candidate, Finished, SearchJudge, SharedBound } from './search.js';
 import { settleControl } from './settle-bank.js';
 import { SharedBounds } from './shared-bounds.js';
 import type { Site } from './site.js';
-import { controllerView, type Study } from './study.js';
+import { controllerView, meterColumns, type Study } from './study.js';
 
 /** What a search is about. */
 export interface SearchGround {
@@ -62,7 +62,8 @@ export class SiteSearchJudge implements SearchJudge {
     this.demandedFactor = (site.catalogue?.mustMeetTarget ?? true) ? study.site.targetPowerFactor : null;
     this.#screen = new ClearScreen(study);
     this.#closedForms = new Uint8Array(2 * ground.space.builds.length);
-    this.#runGround = { study, prepared, columns: runColumns(study.record.beginS.length) };
+    const columns = meterColumns(study);
+    this.#runGround = { study, prepared, columns, active: new ActiveSums(study.record.activeKw, months.length) };
     this.#worthGround = {
       study,
       months,

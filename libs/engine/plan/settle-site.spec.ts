@@ -69,6 +69,16 @@ describe('a site with next to nothing given', () => {
     expect(settled.assumptions.some(({ code }) => code === 'default.limits.emcClass')).toBe(false);
   });
 
+  it('is damped by what the network lists and not by the record’s mean as well, and says that', () => {
+    const dampingOf = (motors: { bus: string; kw: number }[]) => {
+      const settled = settleSite({ ...bare, network: { buses: [{ name: 'A' }], motors } }, record([200, 200]));
+      const codes = settled.assumptions.map(({ code }) => code).filter((code) => /damping.*(max|Listed)/.test(code));
+      return { maxKw: settled.site.loads.dampingKw.max, codes };
+    };
+    expect(dampingOf([{ bus: 'A', kw: 120 }])).toEqual({ maxKw: 0, codes: ['loads.dampingListed'] });
+    expect(dampingOf([])).toEqual({ maxKw: 200, codes: ['default.loads.dampingKw.max'] });
+  });
+
   it('is damped by nothing where there is no record, or none but export', () => {
     expect(settleSite(bare, null).site.loads.dampingKw.max).toBe(0);
     expect(settleSite(bare, record([-100, -50])).site.loads.dampingKw.max).toBe(0);

@@ -209,7 +209,10 @@ function settleLoads(site: Site, record: LoadRecord | null, defaults: Defaults):
   const meanKw = record === null || listed ? 0 : Math.max(0, compensatedSum(record.activeKw) / record.activeKw.length);
   // A stated minimum above the mean is the user's own, and the maximum can't be less.
   const most = Math.max(meanKw, loads?.dampingKw?.min ?? 0);
-  const max = defaults.take(loads?.dampingKw?.max, most, 'loads.dampingKw.max', 'kW');
+  const max = listed
+    ? (loads?.dampingKw?.max ?? most)
+    : defaults.take(loads?.dampingKw?.max, most, 'loads.dampingKw.max', 'kW');
+  if (listed && loads?.dampingKw?.max === undefined) defaults.note('loads.dampingListed', 'loads.dampingKw.max', {});
   // A list of loads that are all off declares what an empty one does.
   const none = loads?.distorting?.every(({ fundamentalA }) => fundamentalA === 0);
   if (none) defaults.note('loads.distorting.none', 'loads.distorting', {});

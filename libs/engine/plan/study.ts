@@ -3,7 +3,7 @@ import type { Bank } from '../layout/bank.js';
 import { type NetworkModel, siteNetwork } from '../network/network-model.js';
 import type { Control } from '../operation/control.js';
 import type { ControllerView } from '../operation/controller-view.js';
-import { type MeterAfter, meterAfter, meterAfterInto } from '../operation/meter-after.js';
+import { type MeterAfter, meterAfterInto } from '../operation/meter-after.js';
 import { type OperationMonth, operationMonths, type Simulated } from '../operation/operation.js';
 import { simulate } from '../operation/simulate.js';
 import { switchedBank } from '../operation/switched-bank.js';
@@ -17,7 +17,7 @@ import { needColumn, type Target, targetKw } from '../requirement/need.js';
 import { type RequirementSummary, summarizeRequirement } from '../requirement/requirement.js';
 import { meteringOf } from './metering-of.js';
 import { type TurnedLoad, turnedLoad } from './recorded-bank.js';
-import { runColumns } from './run-columns.js';
+import { type RunColumns, runColumns } from './run-columns.js';
 import { settleSite } from './settle-site.js';
 import type { SettledSite } from './settled-site.js';
 import type { Site } from './site.js';
@@ -104,11 +104,28 @@ export interface Operated extends Simulated {
 }
 
 /**
+ * Columns for a bank's simulation; where the meter stands at the bus, its active power is the record's own.
+ * @param study site and record
+ * @returns columns of length n
+ */
+export function meterColumns({ record, load }: Study): RunColumns {
+  return runColumns(record.beginS.length, load.metering.at === 'bus' ? record.activeKw : undefined);
+}
+
+/** What a simulation may be given. */
+export interface OperateGiven {
+  /** what the controller sees, length n; the interval's own averages where absent */
+  view?: ControllerView;
+  /** columns of the same study, written over; new ones where absent */
+  columns?: RunColumns;
+}
+
+/**
  * Simulates a bank over the record and totals the meter after it.
  * @param study site and record
  * @param bank the bank
  * @param control settings
- * @param view what the controller sees, length n; the interval's own averages where absent
+ * @param given what is there already
  * @returns columns and monthly energies at the meter
  * @source method-controller
  */
@@ -116,12 +133,13 @@ export function operate(
   study: Study,
   bank: Bank,
   control: Control,
-  view = controllerView(study, control.setPointPowerFactor),
+  { view = controllerView(study, control.setPointPowerFactor), columns = meterColumns(study) }: OperateGiven = {},
 ): Operated {
   const { record, load } = study;
-  const run = simulate(switchedBank(bank, study.site.nominalV), control, view);
+  const { connectedKvar, meter } = columns;
+  const run = simulate(switchedBank(bank, study.site.nominalV), control, view, connectedKvar);
   const deliveredKvar = atVoltage(run.connectedKvar, study.voltageScale);
-  const meter = meterAfter(record, load, deliveredKvar);
+  meterAfterInto(meter, { record, load, connectedKvar: deliveredKvar }, 0, deliveredKvar.length);
   return {
     beginS: record.beginS,
     intervalS: record.intervalS,

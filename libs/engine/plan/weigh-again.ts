@@ -3,12 +3,15 @@ import { presentParts } from '../money/bank-worth.js';
 import { billTotals } from '../money/bill.js';
 import { capitalOf } from '../money/capital.js';
 import type { SettledFinance } from '../money/cash-flow.js';
-import { runningCosts } from '../money/running-cost.js';
-import { savingByMonth } from '../money/saving.js';
+import { type BankUse, runningCosts } from '../money/running-cost.js';
+import { type Saving, savingByMonth } from '../money/saving.js';
+import type { Control } from '../operation/control.js';
+import type { ControllerView } from '../operation/controller-view.js';
 import { meetsTarget } from '../operation/operation.js';
 import type { MoneyStudy } from './money-study.js';
 import { usageOf } from './price-bank.js';
-import type { Operated, Study } from './study.js';
+import type { RunColumns } from './run-columns.js';
+import { controllerView, meterColumns, operate, type Study } from './study.js';
 import type { WeighedBank } from './weighed-bank.js';
 
 /** A record, moved or not, on which ways are weighed. */
@@ -17,13 +20,17 @@ export interface Scale {
   money: MoneyStudy;
   /** totals of the bills of that record without anything new */
   beforeTotals: number[];
+  /** what simulations on it write into in turn */
+  columns: RunColumns;
+  /** what controllers see on it, by set point */
+  views: Map<number, ControllerView>;
 }
 
-/** A bank as it works while it is weighed. */
+/** A bank as it works while it is weighed: what its simulation left, for money to be reckoned from. */
 export interface Working {
-  operated: Operated;
-  /** as it was simulated: aged, or with a stage out */
-  bank: Bank;
+  byMonth: Saving['byMonth'];
+  targetMet: boolean;
+  use: BankUse;
   /** what is maintained and replaced: the bank, less a stage that is out */
   kept: Bank;
 }
@@ -46,7 +53,46 @@ export interface WorthAgain {
  * @source method-money
  */
 export function scaleOf(study: Study, money: MoneyStudy): Scale {
-  return { study, money, beforeTotals: billTotals(money.prepared, study.record) };
+  const beforeTotals = billTotals(money.prepared, study.record);
+  return { study, money, beforeTotals, columns: meterColumns(study), views: new Map() };
+}
+
+/**
+ * What controllers of one set point see on a scale, formed once.
+ * @param scale record and bills
+ * @param control settings
+ * @returns columns of length n
+ */
+export function viewOn({ study, views }: Scale, { setPointPowerFactor }: Control): ControllerView {
+  const view = views.get(setPointPowerFactor) ?? controllerView(study, setPointPowerFactor);
+  views.set(setPointPowerFactor, view);
+  return view;
+}
+
+/**
+ * Simulates a bank on a scale.
+ * @param scale record and bills; its columns are written over
+ * @param bank as it works: aged, or with a stage out
+ * @param control settings
+ * @param given what the controller sees, its own averages where absent; what is kept of the bank, all where absent
+ * @returns how it works there
+ * @source method-money
+ */
+export function workOn(
+  scale: Scale,
+  bank: Bank,
+  control: Control,
+  { view = viewOn(scale, control), kept = bank }: { view?: ControllerView; kept?: Bank } = {},
+): Working {
+  const { study, money, beforeTotals, columns } = scale;
+  const { months } = money.prepared.calendar;
+  const operated = operate(study, bank, control, { view, columns });
+  return {
+    byMonth: savingByMonth(months, beforeTotals, billTotals(money.prepared, operated.meter)).byMonth,
+    targetMet: meetsTarget(operated.months, study.site.targetPowerFactor),
+    use: usageOf(study, bank, operated.run),
+    kept,
+  };
 }
 
 /**
@@ -64,14 +110,12 @@ export function weighAgain(
   working: Working,
   finance: SettledFinance = scale.money.finance,
 ): WorthAgain {
-  const { study, money, beforeTotals } = scale;
+  const { money } = scale;
   const { months } = money.prepared.calendar;
-  const { byMonth } = savingByMonth(months, beforeTotals, billTotals(money.prepared, working.operated.meter));
+  const { byMonth, targetMet, use } = working;
   const savingPerYear = byMonth.reduce((sum, saving) => sum + saving, 0);
-  const targetMet = meetsTarget(working.operated.months, study.site.targetPowerFactor);
   if (money.prices === null) return { savingPerYear, targetMet, gain: null, cost: null, npv: null };
   const cost = { ...money.prices, switchKind: way.switchKind };
-  const use = usageOf(study, working.bank, working.operated.run);
   const of = { switchKind: way.switchKind, horizonYears: finance.horizonYears };
   const running = runningCosts(working.kept, cost.prices, use, of);
   const capital = way.isNew ? capitalOf(way.bank, cost).total : 0;

@@ -11,7 +11,7 @@ import { MoneyMover, type WeighedWays } from './money-mover.js';
 import { moneyRobustness } from './money-robustness.js';
 import { moneyStudy } from './money-study.js';
 import type { BankOutcome } from './outcome.js';
-import { reactorTrials } from './reactor-choice.js';
+import { pricedTrials, reactorTrials } from './reactor-choice.js';
 import type { BankResult } from './result.js';
 import { robustness } from './robustness.js';
 import { spareWays } from './spare-ways.js';
@@ -45,8 +45,9 @@ export function withRobustness<T extends BankOutcome>(outcome: T, watch?: Watch)
   step(0.6);
   const assumptions = withEffects(result.assumptions, judged, bank, result.control);
   step(0.8);
-  const trials = reactorTrials(judged, bank, result.control, COMMON_CATALOGUE.ratedV);
-  const more = spareWays(judged, bank, result.control, costOf(weighed));
+  const cost = costOf(weighed);
+  const trials = pricedTrials(reactorTrials(judged, bank, result.control, COMMON_CATALOGUE.ratedV), bank, cost);
+  const more = spareWays(judged, bank, result.control, cost);
   step(1);
   const firm = {
     ...outcome,

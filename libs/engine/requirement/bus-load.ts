@@ -11,7 +11,7 @@ export type OldBank = { state: 'none' } | { state: 'fixed'; kvar: number } | { s
 /** The load's own power at the bus, old bank taken out; length n. */
 export interface BusLoad {
   metering: Metering;
-  /** [kW] */
+  /** where the meter stands at the bus, the record's own column [kW] */
   activeKw: Float64Array;
   /** net, lagging > 0 [kvar] */
   reactiveKvar: Float64Array;
@@ -29,23 +29,22 @@ export interface BusLoad {
  */
 export function busLoad(record: LoadRecord, metering: Metering, oldBank: OldBank): BusLoad {
   const n = record.beginS.length;
-  const activeKw = new Float64Array(n);
+  const activeKw = metering.at === 'bus' ? record.activeKw : new Float64Array(n);
   const reactiveKvar = new Float64Array(n);
   const logged = oldBank.state === 'logged' ? loggedColumn(record) : null;
   const addedKvar = oldBank.state === 'fixed' ? oldBank.kvar : 0;
   for (let i = 0; i < n; i++) {
-    let p = record.activeKw[i]!;
     let q = record.laggingKvar[i]! - record.leadingKvar[i]!;
     if (metering.at === 'primary') {
+      const p = record.activeKw[i]!;
       const bus = busFromPrimary(metering.passage, p, q);
       const back = primaryFromBus(metering.passage, bus.activeKw, bus.reactiveKvar);
       if (back === null || Math.abs(back.reactiveKvar - q) > 1e-6 * metering.passage.baseKva) {
         throw cannotCarry(record.beginS[i]!, p, q);
       }
-      p = bus.activeKw;
+      activeKw[i] = bus.activeKw;
       q = bus.reactiveKvar;
     }
-    activeKw[i] = p;
     reactiveKvar[i] = q + addedKvar + (logged === null ? 0 : logged[i]!);
   }
   return { metering, activeKw, reactiveKvar };

@@ -53,6 +53,10 @@ export const GERMAN_ASSUMPTION_MESSAGES: Readonly<Record<string, Translation>> =
     'Die eine Resonanz dämpfende Last ist höchstens {value}, die mittlere Last des Lastgangs.',
     'Sie senkt die Überhöhungen des Nennfalls; die Eckfälle rechnen auch mit 0.',
   ),
+  'loads.dampingListed': said(
+    'Eine Resonanz dämpfen die im Netz aufgeführten Motoren und ohmschen Lasten, und nichts daneben.',
+    'Die Last an der Sammelschiene der Anlage angeben, die nicht darunter ist; die Eckfälle lassen auch alles weg.',
+  ),
   'default.loads.dampingKw.min': said(
     'Die eine Resonanz dämpfende Last kann auf {value} sinken.',
     'Das ungünstige Ende; nichts zu klären.',

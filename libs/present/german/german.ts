@@ -6,6 +6,7 @@ import { GERMAN_CHANNEL_NOTE_MESSAGES } from './german-channel-note-messages.js'
 import { GERMAN_DEVICE_TEXTS } from './german-device-texts.js';
 import { GERMAN_DOCUMENT_TEXTS } from './german-document-texts.js';
 import { GERMAN_ESTIMATE_MESSAGES } from './german-estimate-messages.js';
+import { GERMAN_FIELD_NAMES } from './german-field-names.js';
 import { GERMAN_FIGURE_TEXTS } from './german-figure-texts.js';
 import { GERMAN_JUDGEMENT_TEXTS } from './german-judgement-texts.js';
 import { GERMAN_MONEY_MESSAGES } from './german-money-messages.js';
@@ -34,6 +35,7 @@ export const GERMAN: Catalogue = {
     ...GERMAN_BASIS_TEXTS,
     ...GERMAN_NETWORK_TEXTS,
   },
+  fields: GERMAN_FIELD_NAMES,
   messages: {
     ...GERMAN_ASSUMPTION_MESSAGES,
     ...GERMAN_CAUTION_MESSAGES,
