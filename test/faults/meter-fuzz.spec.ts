@@ -33,7 +33,19 @@ function expectSame({ record }: MeterReading, bytes: Uint8Array, dialect: Dialec
     record.leadingKvar[i],
   ]);
   const theirs = [...slow.rows].map(([beginS, row]) => [beginS, ...row]).sort((a, b) => a[0]! - b[0]!);
-  expect(mine).toEqual(theirs);
+  expect(mine).toEqual(withoutFillers(theirs, record, slow.intervalS));
+}
+
+/** The slow reading knows no numbers that stand for missing ones: of those that are said to be left out, as many rows go. */
+function withoutFillers(rows: number[][], { notes }: MeterReading['record'], intervalS: number): number[][] {
+  const left = notes.find(({ code }) => code === 'fillers-left-out')?.values as
+    | { values: number; value: number }
+    | undefined;
+  if (left === undefined) return rows;
+  const sizes = [Math.abs(left.value), Math.abs(left.value) * (3600 / intervalS)];
+  const kept = rows.filter(([, ...powers]) => !powers.some((power) => sizes.includes(Math.abs(power))));
+  expect(rows.length - kept.length).toBe(left.values);
+  return kept;
 }
 
 it(`reads or refuses ${FILES} damaged files and changes no accepted value (seed ${SEED})`, async () => {

@@ -66,7 +66,8 @@ export class DayRows implements ReadRows {
   take(cells: RowCells, rowNumber: number): void {
     if (cells.isBlankFrom(0)) return;
     const stamp = this.stamps.read(cells);
-    if (stamp === null && this.#isSkipped(cells, rowNumber)) return;
+    // a row whose quotation marks are broken is none of the rows that may be left out
+    if (stamp === null && cells.badQuote === 0 && this.#isSkipped(cells, rowNumber)) return;
     const problem = shapeProblem(cells, this.#layout.names, rowNumber);
     if (problem !== null) {
       this.problems.add(problem);

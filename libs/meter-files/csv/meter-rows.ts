@@ -1,8 +1,6 @@
 import type { MeterMap } from '#libs/contract/meter-map.js';
 import { shown } from '#libs/contract/shown.js';
 import { InputProblem } from '#libs/engine/index.js';
-import { MAX_INTERVALS } from '../meter-format.js';
-import { refuseTooLong } from '../time/stamped-rows.js';
 import type { CsvLayout } from './csv-layout.js';
 import type { RowCells } from './row-cells.js';
 import { LongRows } from './long-rows.js';
@@ -10,6 +8,9 @@ import { RowReader } from './row-reader.js';
 
 /** Rows of further meters are counted only. */
 const MOST_METERS = 50;
+/** Rows that are kept while it is open which of several meters is meant; each keeps its first ones in any case. */
+const MOST_SHOWN = 2_000_000;
+const FIRST_SHOWN = 1000;
 
 /** What reads the rows of one meter. */
 export type MeterReader = RowReader | LongRows;
@@ -34,6 +35,8 @@ export class MeterRows {
   #lastBytes = new Uint8Array(0);
   #last: MeterReader | null = null;
   #rows = 0;
+  /** rows of the file up to which meters are shown; 0 while all are */
+  #shownTo = 0;
 
   constructor(layout: CsvLayout, map: MeterMap) {
     this.#layout = layout;
@@ -55,16 +58,17 @@ export class MeterRows {
     const reader = this.#readerOf(cells);
     if (reader === null) return;
     const before = reader.rows.count;
+    if (this.#isShown(before, rowNumber)) return;
     reader.take(cells, rowNumber);
     this.#rows += reader.rows.count - before;
-    if (this.#rows > MAX_INTERVALS) refuseTooLong(rowNumber);
   }
 
   /**
-   * Readers with rows of data, by the meter's name; one without a name where the file names no meters.
+   * Readers with rows of data, by the meter's name; one without a name where the file names no meters. Of several meters
+   * `shownTo` is the row behind which not all are kept, 0 where all are.
    * @throws InputProblem where a row can't be read, or the map wants a meter that is not there
    */
-  close(): { readers: Map<string, MeterReader>; meters: number } {
+  close(): { readers: Map<string, MeterReader>; meters: number; shownTo: number } {
     if (this.#layout.side.meter.length === 0) this.#readers.set('', this.first);
     for (const reader of this.#readers.values()) {
       reader.end();
@@ -76,7 +80,17 @@ export class MeterRows {
     const named = [...readers.keys()].filter((name) => name !== '');
     const nameless = readers.get('');
     if (named.length > 0 && nameless !== undefined) this.#refuseNameless(nameless);
-    return { readers, meters: Math.max(readers.size, this.#names.size) };
+    return { readers, meters: Math.max(readers.size, this.#names.size), shownTo: this.#shownTo };
+  }
+
+  /** Whether enough is kept of a meter to show what it is: the one that is chosen is read again, and alone. */
+  #isShown(rows: number, rowNumber: number): boolean {
+    if (this.#rows < MOST_SHOWN || rows < FIRST_SHOWN) return false;
+    if (this.#shownTo > 0) return true;
+    // a repeated header is no second meter
+    if ([...this.#readers.values()].filter((reader) => reader.rows.count > 0).length < 2) return false;
+    this.#shownTo = rowNumber - 1;
+    return true;
   }
 
   #readerOf(cells: RowCells): MeterReader | null {

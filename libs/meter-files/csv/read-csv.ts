@@ -55,10 +55,10 @@ async function meterRead(buffer: RowBuffer, file: UnreadFile, lane: Lane): Promi
     quickReader: lane === 'general' || rows.first instanceof LongRows ? null : rows.first,
     sizeBytes: file.options.sizeBytes ?? 0,
   });
-  const { readers, meters } = rows.close();
+  const { readers, meters, shownTo } = rows.close();
   const [reader] = readers.values();
   if (reader === undefined || reader.rows.count === 0) refuseEmpty();
-  if (readers.size > 1) askWhichMeter(file, readers, meters);
+  if (readers.size > 1) askWhichMeter(file, readers, { meters, shownTo });
   const notes = map.meter === undefined ? [] : [note('meter-chosen', { meter: map.meter, others: meters - 1 })];
   return { file: fileOf(file, reader), notes: [...notes, ...longNotes(reader)] };
 }
@@ -94,7 +94,11 @@ function refuseEmpty(): never {
 }
 
 /** A reading for each meter; a meter that can't be read as the file stands has none. */
-function askWhichMeter(file: UnreadFile, readers: Map<string, MeterReader>, meters: number): never {
+function askWhichMeter(
+  file: UnreadFile,
+  readers: Map<string, MeterReader>,
+  { meters, shownTo }: { meters: number; shownTo: number },
+): never {
   const readings: QuestionReading[] = [];
   const room = new ReadingRoom();
   let failed: InputProblem | undefined;
@@ -104,7 +108,8 @@ function askWhichMeter(file: UnreadFile, readers: Map<string, MeterReader>, mete
     else readings.push(first.reading({ meter }));
   }
   if (readings.length === 0) throw failed!;
-  throw new Question([{ id: 'meter', about: `which of the ${meters} meters in the file is read`, readings }]);
+  const part = shownTo === 0 ? '' : `; what it would give is worked out from the rows up to ${shownTo}`;
+  throw new Question([{ id: 'meter', about: `which of the ${meters} meters in the file is read${part}`, readings }]);
 }
 
 function firstOf(file: UnreadFile, reader: MeterReader, room: ReadingRoom) {

@@ -97,7 +97,8 @@ export class RowReader implements ReadRows {
   take(cells: RowCells, rowNumber: number): void {
     if (cells.isBlankFrom(0)) return;
     const stamp = this.stamps.read(cells);
-    if (stamp === null && this.#isSkipped(cells, rowNumber)) return;
+    // a row whose quotation marks are broken is none of the rows that may be left out
+    if (stamp === null && cells.badQuote === 0 && this.#isSkipped(cells, rowNumber)) return;
     if (!this.#isWhole(cells, rowNumber)) return;
     if (stamp === null) {
       const { stamp: column } = this.#layout.time;

@@ -19,6 +19,13 @@ describe('the grid of a record', () => {
     expect(grid([0, 900, 1800, 4500, 5400])).toMatchObject({ intervalS: 900, kept: [0, 1, 2, 3, 4] });
   });
 
+  it('is refused where rows lie further apart than any month, and not where they are a month apart', () => {
+    const monthS = 31 * 86_400;
+    expect(grid([0, monthS]).intervalS).toBe(monthS);
+    expect(() => grid([0, monthS + 1])).toThrow(`row 3: expected an interval of at most ${monthS} s`);
+    expect(() => grid([3_155_672_700, 0])).toThrow('row 2: expected an interval of at most');
+  });
+
   it('puts rows in time order', () => {
     expect(grid([1800, 900, 0])).toMatchObject({ kept: [2, 1, 0], misplaced: 0 });
     expect(grid([0, 1800, 900, 2700])).toMatchObject({ kept: [0, 2, 1, 3], misplaced: 1 });

@@ -2,6 +2,9 @@ import { InputProblem } from '#libs/engine/index.js';
 import { commonestStepS } from './commonest-step.js';
 import { mixedIntervals } from './mixed-intervals.js';
 
+/** The longest month [s]. */
+const MOST_INTERVAL_S = 31 * 86_400;
+
 /** Rows with a moment each, in any order. */
 export interface MomentRows {
   /** UTC, one a row [s]; rows without a moment (NaN) are left out */
@@ -59,6 +62,7 @@ export class ConflictingRows extends InputProblem {
 export function gridRows(rows: MomentRows, keep: 'first' | 'last' | undefined): IntervalGrid {
   if (isRegular(rows.utcS, rows.spanS)) {
     const { utcS, spare } = rows;
+    refuseLongInterval(rows.rowNumber[1]!, utcS[1]! - utcS[0]!);
     let listed: Int32Array | undefined;
     return {
       intervalS: utcS[1]! - utcS[0]!,
@@ -75,9 +79,17 @@ export function gridRows(rows: MomentRows, keep: 'first' | 'last' | undefined): 
   const { order, misplaced } = timeOrder(rows.utcS);
   const { kept, duplicates, overruled } = oneAMoment(rows, order, keep);
   const intervalS = Number.isNaN(rows.spanS) ? shownStepS(rows.utcS, kept) : rows.spanS;
+  if (kept.length > 1) refuseLongInterval(rows.rowNumber[kept[1]!]!, intervalS);
   refuseOffGrid(rows, kept, intervalS);
   if (Number.isNaN(rows.spanS)) refuseSecondInterval(rows, kept, intervalS);
   return { intervalS, kept, isEveryRow: false, duplicates, overruled, misplaced };
+}
+
+/** Rows further apart than any month are no intervals: one of two stamps is wrong. */
+function refuseLongInterval(row: number, intervalS: number): void {
+  if (!(intervalS > MOST_INTERVAL_S)) return;
+  const expected = `an interval of at most ${MOST_INTERVAL_S} s`;
+  throw new InputProblem([{ code: 'out-of-range', row, expected, found: `${intervalS} s`, unit: 's' }]);
 }
 
 /** Most files: every row one interval after the row before it. */

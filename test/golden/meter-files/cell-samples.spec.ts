@@ -151,3 +151,17 @@ describe('numbers that stand for missing values', () => {
     expect(noteCodes(reading)).not.toContain('fillers-left-out');
   });
 });
+
+describe('a broken quotation mark', () => {
+  const rows = (third: string) =>
+    `time,kW,kvar\n"2024-05-06 00:00",40,20\n"2024-05-06 00:15",41,21\n${third}\n"2024-05-06 00:45",43,23\n`;
+
+  it('before a stamp is refused, and its row not taken for one of totals', async () => {
+    const { problems } = await refusalOf(rows('""2024-05-06 00:30",43,23'));
+    expect(problems).toMatchObject([{ code: 'unreadable', row: 4, column: 1 }]);
+  });
+
+  it('is needed for that: without it the row counts', async () => {
+    expect((await readMeterText(rows('"2024-05-06 00:30",43,23'))).record.beginS.length).toBe(4);
+  });
+});
