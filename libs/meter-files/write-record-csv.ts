@@ -2,6 +2,21 @@ import type { LoadRecord } from '#libs/engine/index.js';
 import { utcStamp } from './record/reading-shown.js';
 
 const ROWS_A_CHUNK = 8192;
+const POWER_NAMES = [
+  'interval begin [UTC]',
+  'active power [kW]',
+  'lagging reactive power [kvar]',
+  'leading reactive power [kvar]',
+];
+const END_NAME = 'interval end [UTC]';
+
+/**
+ * Whether a header is that of a record written here.
+ * @param names of the columns
+ */
+export function isRecordForm(names: readonly string[]): boolean {
+  return names.at(-1) === END_NAME && POWER_NAMES.every((name, k) => names[k] === name);
+}
 
 /**
  * A record as plain CSV: stamps in UTC, means of the interval, lagging and leading apart, valid intervals only.
@@ -23,14 +38,7 @@ export function* recordCsvChunks(record: LoadRecord): Generator<string> {
   if (record.voltageV !== null) optional.push(['voltage [V]', record.voltageV]);
   if (record.connectedKvar !== null) optional.push(['connected bank [kvar]', record.connectedKvar]);
   if (record.standby !== null) optional.push(['standby', record.standby]);
-  const names = [
-    'interval begin [UTC]',
-    'active power [kW]',
-    'lagging reactive power [kvar]',
-    'leading reactive power [kvar]',
-    ...optional.map(([name]) => name),
-    'interval end [UTC]',
-  ];
+  const names = [...POWER_NAMES, ...optional.map(([name]) => name), END_NAME];
   yield `${names.join(',')}\n`;
   const { beginS, intervalS, activeKw, laggingKvar, leadingKvar } = record;
   for (let from = 0; from < beginS.length; from += ROWS_A_CHUNK) {

@@ -52,7 +52,7 @@ export const NOTE_MESSAGES: Messages = {
     'Missing is not zero; find out why.',
   ),
   'fillers-left-out': noted(
-    '{values:number|numbers} such as {value} in {columns} stand for missing values and were left out: below zero where nothing else is, or beyond three times anything else.',
+    '{values:number|numbers} such as {value} in {columns} stand for missing values and were left out: below zero where nothing else is, and beyond three times anything else.',
     'Missing is not zero; find out why. If they are values, say so in the map (fillers).',
   ),
   'qualities-unknown': noted(

@@ -265,10 +265,8 @@ describe('the program ends with', () => {
 
   it('130 where it is interrupted, with its JSON', async () => {
     const program = spawn(process.execPath, [PROGRAM, 'read', '-', '--json'], { stdio: ['pipe', 'pipe', 'pipe'] });
-    let stdout = '';
-    program.stdout.on('data', (chunk) => {
-      stdout += chunk;
-    });
+    const said: Buffer[] = [];
+    program.stdout.on('data', (chunk) => said.push(chunk));
     // It says how far it is once a second has gone by: from then on it can certainly be interrupted.
     program.stderr.once('data', () => program.kill('SIGINT'));
     program.stdin.write('time begin,active power (kW)\n');
@@ -276,8 +274,9 @@ describe('the program ends with', () => {
     const feed = () => program.stdin.write(`${new Date(minute++ * 60_000).toISOString()},1\n`);
     const feeding = setInterval(feed, 20);
     program.on('exit', () => clearInterval(feeding));
+    program.stdin.on('error', () => clearInterval(feeding));
     expect(await exitCode(program)).toBe(130);
-    expect(JSON.parse(stdout).error.code).toBe('stopped');
+    expect(JSON.parse(Buffer.concat(said).toString()).error.code).toBe('stopped');
   });
 
   it('no complaint where its reader has read enough', async () => {

@@ -2,6 +2,7 @@ import type { MeterMap } from '#libs/contract/meter-map.js';
 import type { Remark } from '#libs/engine/index.js';
 import { note } from '../note.js';
 import { RowSet } from '../row-set.js';
+import { isRecordForm } from '../write-record-csv.js';
 import type { CsvLayout } from './csv-layout.js';
 import type { FillerNumbers, ReadRows } from './csv-meaning.js';
 
@@ -17,8 +18,9 @@ const FAR_TIMES = 3;
 const NEAR_RATIO = 0.2;
 
 /**
- * Takes out numbers that stand for a missing value: below zero where nothing else of the column is, or beyond three times
- * anything else. One that is neither, and has no neighbour like it, stays and has to be asked about.
+ * Takes out numbers that stand for a missing value: below zero where nothing else of the column is, and beyond three times
+ * anything else. Another that has no neighbour like it stays and has to be asked about. A record in the program's own form
+ * leaves out what is missing, and has none.
  * @param reader rows as read; what is taken out becomes NaN
  * @param layout its columns
  * @param map what a person says
@@ -26,7 +28,7 @@ const NEAR_RATIO = 0.2;
 export function takeFillers(reader: ReadRows, layout: CsvLayout, { fillers }: MeterMap): FillerNumbers {
   const found: FillerNumbers = { taken: 0, value: 0, columns: [], open: null };
   const used = new Set(layout.choices.flatMap(({ columns }) => columns.map(({ column }) => column)));
-  if (fillers === 'values') return found;
+  if (fillers === 'values' || isRecordForm(layout.names)) return found;
   for (const [k, column] of reader.columns.entries()) {
     const values = reader.rows.values[k]!.subarray(0, reader.rows.count);
     if (!used.has(column) || !holdsFiller(values)) continue;
@@ -70,7 +72,7 @@ function takeFrom(values: Float64Array, found: FillerNumbers, all: boolean): Row
     if (!isFiller(value)) continue;
     const below = value < 0 && !(least < 0);
     const far = Math.abs(value) > FAR_TIMES * Math.max(most, -least);
-    if (below || far || all) {
+    if ((below && far) || all) {
       if (found.taken++ === 0) found.value = value;
       values[row] = Number.NaN;
     } else if (!goesOn(values, row)) open.add(row);

@@ -47,7 +47,7 @@ export const GERMAN_NOTE_MESSAGES: Readonly<Record<string, Translation>> = {
     'Fehlend ist nicht null; die Ursache feststellen.',
   ),
   'fillers-left-out': said(
-    '{values:Zahl|Zahlen} wie {value} in {columns} stehen für fehlende Werte und wurden ausgelassen: unter null, wo sonst nichts unter null ist, oder über dem Dreifachen von allem anderen.',
+    '{values:Zahl|Zahlen} wie {value} in {columns} stehen für fehlende Werte und wurden ausgelassen: unter null, wo sonst nichts unter null ist, und über dem Dreifachen von allem anderen.',
     'Fehlend ist nicht null; die Ursache feststellen. Sind es Werte, dies in der Zuordnung angeben (fillers).',
   ),
   'qualities-unknown': said(

@@ -102,7 +102,7 @@ describe('a date in columns of its own', () => {
 });
 
 describe('numbers that stand for missing values', () => {
-  it('are left out where they are below zero or beyond anything else of their column, and it is said', async () => {
+  it('are left out where they are below zero and beyond anything else of their column, and it is said', async () => {
     await expectRecord(
       'fillers',
       {},
@@ -122,9 +122,9 @@ describe('numbers that stand for missing values', () => {
       { map: { fillers: 'values' } },
       {
         ...quarters,
-        kw: [40, -9999, 42, 9_999_999, 44],
-        lagging: [20, 0, 22, 23, 24],
-        leading: [0, 9999, 0, 0, 0],
+        kw: [40, -9999, 42, 43, 44],
+        lagging: [20, 0, 22, 0, 24],
+        leading: [0, 9999, 0, 32_768, 0],
       },
     );
   });
@@ -140,6 +140,11 @@ describe('numbers that stand for missing values', () => {
       map: { fillers: 'missing' },
     });
     expect(Array.from(answered.record.activeKw)).toEqual([400, 420, 430]);
+  });
+
+  it('are asked about where nothing but their size speaks against them: a peak may be one', async () => {
+    const far = sample('fillers-open').toString().replace('999', '9999999');
+    expect((await questionOf(far)).questions.map(({ id }) => id)).toEqual(['fillers']);
   });
 
   it('are values without a question where their column goes on through them', async () => {
