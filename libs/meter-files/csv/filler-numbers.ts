@@ -12,7 +12,7 @@ const FILLERS = new Set([
   99_999.9, 99_999.99, 32_767, 32_768, 65_535, 2_147_483_647, 2_147_483_648, 4_294_967_295,
 ]);
 const LEAST = 999;
-/** A number so many times as large as any other of its column is none of it. */
+/** A number more than so many times as large as any other of its column does not belong to it. */
 const FAR_TIMES = 3;
 /** As near to the one before or behind it, a number goes on as its column does. */
 const NEAR_RATIO = 0.2;
