@@ -1,5 +1,5 @@
 import type { Locator, Page } from 'playwright-core';
-import { afterAll, afterEach, beforeAll, beforeEach, describe, expect, it } from 'vitest';
+import { afterEach, beforeEach, describe, expect, it } from 'vitest';
 import { demoLoad } from '#apps/server/demo/demo-load.js';
 import { CHROMIUM, type OpenPage, openPage } from '../support/browser.js';
 import { databases, type TestDatabase } from '../support/databases.js';
