@@ -6,6 +6,10 @@ import { xmlStart } from './xml/xml-start.js';
 const PARQUET_STARTS = ['PAR1', 'PARE'];
 const ZIP = [0x50, 0x4b, 0x03, 0x04];
 const EMPTY_ZIP = [0x50, 0x4b, 0x05, 0x06];
+/** so much of the head is looked at for what no text holds [bytes] */
+const TEXT_HEAD_BYTES = 512;
+/** one byte in so many may be a character that no text holds: a damaged text is told by row and column */
+const FEW = 20;
 /** what a workbook with a password and the older format begin with */
 const COMPOUND = [0xd0, 0xcf, 0x11, 0xe0];
 
@@ -67,6 +71,17 @@ export function isCim(head: Uint8Array): boolean {
 export function isEspi(head: Uint8Array): boolean {
   const start = xmlStart(head);
   return /naesb\.org\/espi/i.test(start) || /<(?:[\w.-]+:)?(?:IntervalBlock|UsagePoint)[\s/>]/.test(start);
+}
+
+/**
+ * Whether a file begins like text that is not XML, be it damaged here and there.
+ * @param head the first bytes
+ */
+export function isPlainText(head: Uint8Array): boolean {
+  const start = head.subarray(0, TEXT_HEAD_BYTES);
+  let strange = 0;
+  for (const byte of start) if (byte < 0x09 || (byte > 0x0d && byte < 0x20)) strange++;
+  return strange * FEW <= start.length && xmlStart(head) === '';
 }
 
 /**

@@ -1,8 +1,7 @@
 import { readCsv } from './csv/read-csv.js';
-import { isCim, isEspi, isMscons, isNem12, isParquet, isProfileReadout, isXlsx } from './format-starts.js';
+import { isCim, isEspi, isMscons, isNem12, isParquet, isPlainText, isProfileReadout, isXlsx } from './format-starts.js';
 import type { MeterFormat } from './meter-format.js';
 import { isQuadrantRows } from './quadrant-rows/quadrant-line.js';
-import { xmlStart } from './xml/xml-start.js';
 
 /**
  * Every format that is read, in the order in which a file is tried against them; delimited text takes what is left. A
@@ -90,7 +89,7 @@ export const FORMATS: readonly MeterFormat[] = [
       'RFC 4180, Common Format and MIME Type for Comma-Separated Values (CSV) Files, https://www.rfc-editor.org/rfc/rfc4180',
       'ISO 8601-1:2019, Date and time',
     ],
-    recognises: (head) => !head.subarray(0, 512).includes(0) && xmlStart(head) === '',
+    recognises: isPlainText,
     read: readCsv,
   },
 ];

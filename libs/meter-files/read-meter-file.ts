@@ -3,6 +3,7 @@ import { FORMATS } from './formats.js';
 import { isKeptRecord, readKeptRecord } from './kept-record/read-kept-record.js';
 import { MeterBytes } from './meter-bytes.js';
 import type { MeterFormat, MeterReading, ReadOptions } from './meter-format.js';
+import { unknownFormat } from './unknown-format.js';
 
 /**
  * Reads a meter file of any known format.
@@ -39,8 +40,7 @@ function formatOf(head: Uint8Array, options: ReadOptions): MeterFormat {
   }
   const format = FORMATS.find(({ recognises }) => recognises(head));
   if (format !== undefined) return format;
-  const expected = `a meter file in one of the formats ${names}`;
-  throw new InputProblem([{ code: 'unknown-format', expected, found: 'a file of another kind' }]);
+  throw unknownFormat(head, names);
 }
 
 function isBlank(head: Uint8Array): boolean {

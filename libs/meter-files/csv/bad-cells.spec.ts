@@ -28,13 +28,11 @@ describe('bad cells', () => {
     ['a cell too many', '2024-05-06 00:15,2,1,7', { code: 'wrong-length', row: 3, column: 4 }],
     ['a line of 10 MB', `2024-05-06 00:15,2,${'1'.repeat(10_000_000)}`, { code: 'too-large', row: 3 }],
   ])('%s', async (_name, second, problem) => {
-    // a whole first block of letters, so that NUL is met in the rows and not in what a format is recognised by
-    const file = lines(...Array.from({ length: 12 }, () => `# ${'remark '.repeat(9)}`)) + rows(second);
-    const bytes = new TextEncoder().encode(file);
+    const bytes = new TextEncoder().encode(rows(second));
     const startMs = performance.now();
     const { problems } = await refusalOf(bytes);
     expect(performance.now() - startMs).toBeLessThan(1000);
-    expect(problems).toMatchObject([{ ...problem, row: problem.row + 12 }]);
+    expect(problems).toMatchObject([problem]);
   });
 
   it('a number of 10⁹ digits, of which little more than a row’s length is read', async () => {
@@ -49,7 +47,7 @@ describe('bad cells', () => {
     expect(sent).toBeLessThan(4e6);
   });
 
-  it('NUL in the head of a file', async () => {
-    expect((await refusalOf(rows('2024-05-06 00:15,2\0,1'))).code).toBe('unknown-format');
+  it('so many NUL that it is no text', async () => {
+    expect((await refusalOf(rows(`2024-05-06 00:15,2${'\0'.repeat(20)},1`))).code).toBe('unknown-format');
   });
 });

@@ -342,9 +342,16 @@ describe('MeterReadings messages', () => {
 });
 
 describe('other XML', () => {
-  it('is refused as a format that is not known', async () => {
-    expect((await refusalOf('<?xml version="1.0"?><rss><channel/></rss>')).problems[0]).toMatchObject({
-      code: 'unknown-format',
+  it('is refused by the row and the name of its outermost element', async () => {
+    expect((await refusalOf('<?xml version="1.0"?>\n <rss><channel/></rss>')).problems[0]).toMatchObject({
+      ...{ code: 'unknown-format', row: 2, column: 2, found: 'XML of another kind, <rss>' },
+    });
+  });
+
+  it('is refused by the row of a document type', async () => {
+    const bomb = '<?xml version="1.0"?>\n<!DOCTYPE a [<!ENTITY b "bb">]>\n<a>&b;</a>';
+    expect((await refusalOf(bomb)).problems[0]).toMatchObject({
+      ...{ code: 'unreadable', row: 2, column: 1, found: '<!DOCTYPE' },
     });
   });
 
