@@ -63,10 +63,10 @@ export function basisRange(
   period: number,
   { basis, kvaShare = 0 }: Pick<DemandClause, 'basis' | 'kvaShare'>,
 ): Range {
+  if (basis === 'kVA') return box.maxKva(period);
   const kw = box.maxKw(period);
   if (basis === 'kW') return kw;
   const kva = box.maxKva(period);
-  if (basis === 'kVA') return kva;
   return { lo: Math.max(kw.lo, kvaShare * kva.lo), hi: Math.max(kw.hi, kvaShare * kva.hi) };
 }
 

@@ -6,6 +6,7 @@ import type { ControllerView } from '../operation/controller-view.js';
 import { meterAfterInto } from '../operation/meter-after.js';
 import { Simulation } from '../operation/simulate.js';
 import { switchedBank } from '../operation/switched-bank.js';
+import { plainSum } from '../quantity/plain-sum.js';
 import { energyPowerFactor } from '../quantity/power-factor.js';
 import type { ActiveSums } from './active-sums.js';
 import type { RunColumns } from './run-columns.js';
@@ -86,8 +87,7 @@ export class CandidateRun {
   #deliveredInto(from: number, end: number): number {
     const { study, columns } = this.#ground;
     const { connectedKvar } = columns;
-    let sum = 0;
-    for (let i = from; i < end; i++) sum += connectedKvar[i]!;
+    const sum = plainSum(connectedKvar, from, end);
     const { voltageScale } = study;
     if (voltageScale !== null) for (let i = from; i < end; i++) connectedKvar[i]! *= voltageScale[i]!;
     return (sum * study.record.intervalS) / 3600;
@@ -97,8 +97,7 @@ export class CandidateRun {
     const { study, columns } = this.#ground;
     const { activeKw, laggingKvar } = columns.meter;
     const active = this.#ground.active.sum(m, activeKw, from, end);
-    let lagging = 0;
-    for (let i = from; i < end; i++) lagging += laggingKvar[i]!;
+    const lagging = plainSum(laggingKvar, from, end);
     this.laggingKvarh[m] = (this.laggingKvarh[m - 1] ?? 0) + (lagging * study.record.intervalS) / 3600;
     const factor = energyPowerFactor(active, lagging);
     this.lowestFactor = Math.min(this.lowestFactor, factor ?? 1);
