@@ -36,7 +36,7 @@ export function demandRange(ground: RangeGround, clause: DemandClause, path: str
   const pct = clause.scale === undefined ? null : scaleRange(clause.scale);
   const parts = pricedParts(ground, clause, path).map(
     ({ selection, pricePerUnit }): RangedPart => ({
-      box: ground.boxes.demand(selection, per, clause.reactive ?? 'lagging'),
+      box: ground.boxes.demand(selection, per, clause.reactive ?? 'lagging', 'kva'),
       factor: pct === null ? null : factorBox(ground, selection, per),
       rule: new QuantityRule(clause, ground.carriedRows++),
       pricePerUnit,
