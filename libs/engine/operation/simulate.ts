@@ -102,12 +102,13 @@ export class Simulation {
     const state = this.#state;
     const { wantedKvar, beginS } = this.#view;
     const band = state.bandKvar;
-    let level = state.levelKvar;
+    // a plus keeps the level a plain number: what a function returns would be looked at in every interval
+    let level = +state.levelKvar;
     for (let i = this.#next; i < end; i++) {
       const d = wantedKvar[i]! - level;
       if (d > band || d < -band) {
         state.interval = i;
-        level = state.decide(beginS[i]!, wantedKvar[i]!, 1);
+        level = +state.decide(beginS[i]!, wantedKvar[i]!, 1);
       }
       connectedKvar[i] = level;
     }

@@ -50,9 +50,8 @@ export class CellBounds {
   readonly #active: ActiveSums;
   /** nothing is connected at the least, and the columns say so already */
   #noneIsLeast = false;
-  /** least and most connected in the interval before the month that is formed [kvar] */
-  #leastBefore = 0;
-  #mostBefore = 0;
+  /** least and most connected in the interval before the stretch that is formed */
+  readonly #before = { leastKvar: new Float64Array(1), mostKvar: new Float64Array(1) };
 
   /**
    * @param study site and record
@@ -104,8 +103,8 @@ export class CellBounds {
       leastMovesKvar: months.map(() => []),
       mostLowestFactor: 1,
     };
-    this.#leastBefore = 0;
-    this.#mostBefore = 0;
+    this.#before.leastKvar[0] = 0;
+    this.#before.mostKvar[0] = 0;
     this.#noneIsLeast &&= size.wantedKvar === null;
     const bills = billRangeOf(this.#ranged, (m) => {
       this.#monthInto(size, m);
@@ -152,7 +151,8 @@ export class CellBounds {
   ): void {
     const { aboveKvar, belowKvar, paceKvar } = reach;
     const [leastColumn, mostColumn] = [this.#leastConnectedKvar, this.#mostConnectedKvar];
-    let [least, most] = [this.#leastBefore, this.#mostBefore];
+    const before = this.#before;
+    let [least, most] = [before.leastKvar[0]!, before.mostKvar[0]!];
     for (let i = from; i < end; i++) {
       const slowest = most - paceKvar;
       most = wantedKvar[i]! + aboveKvar;
@@ -167,7 +167,8 @@ export class CellBounds {
       if (least < 0) least = 0;
       leastColumn[i] = least;
     }
-    [this.#leastBefore, this.#mostBefore] = [least, most];
+    before.leastKvar[0] = least;
+    before.mostKvar[0] = most;
   }
 
   // Behind transformers their loss is convex in the connected kvar: most at an end, and no less than what the active

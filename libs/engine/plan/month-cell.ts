@@ -46,9 +46,11 @@ export class MonthCells {
   readonly #mostKvar: Float64Array;
   readonly #wholeSums: MonthSums;
   readonly #partSums: MonthSums;
-  /** least and most connected in the interval before the stretch that is formed [kvar] */
-  #leastBefore = 0;
-  #mostBefore = 0;
+  // In columns, so that the kernel is compiled once for sizes of any make.
+  /** most and least of a size, its reach above and below, its pace [kvar] */
+  readonly #limitsKvar = new Float64Array(5);
+  /** most and least connected in the interval before the stretch that is formed [kvar] */
+  readonly #beforeKvar = new Float64Array(2);
 
   /**
    * @param study site and record
@@ -98,8 +100,9 @@ export class MonthCells {
       leastMovesKvar: months.map((): number[] => []),
       mostLowestFactor: 1,
     };
-    this.#leastBefore = 0;
-    this.#mostBefore = 0;
+    const { aboveKvar, belowKvar, paceKvar } = size.reach;
+    this.#limitsKvar.set([size.mostKvar, size.leastKvar, aboveKvar, belowKvar, paceKvar]);
+    this.#beforeKvar.fill(0);
     const bills = billRangeOf(this.#ranged, (m) => {
       this.#monthInto(size, m);
       this.#sumInto(cell, size, m);
@@ -163,23 +166,20 @@ export class MonthCells {
       sums.most[m] = mostKvar * (end - from);
       return;
     }
-    for (let at = from; at < end; at += STRETCH) {
-      this.#controlledInto(size, { wantedKvar, leastWantedKvar }, m, { from: at, end: Math.min(at + STRETCH, end) });
-    }
+    for (let at = from; at < end; at += STRETCH) this.#controlledInto(wantedKvar, leastWantedKvar, m, at);
   }
 
   // biome-ignore lint/complexity/noExcessiveCognitiveComplexity: a kernel; its sums stay in locals
-  #controlledInto(
-    { mostKvar, leastKvar, reach }: CellSize,
-    { wantedKvar, leastWantedKvar }: { wantedKvar: Float64Array; leastWantedKvar: Float64Array },
-    m: number,
-    { from, end }: { from: number; end: number },
-  ): void {
+  #controlledInto(wantedKvar: Float64Array, leastWantedKvar: Float64Array, m: number, from: number): void {
+    const end = Math.min(from + STRETCH, this.#ranged.prepared.calendar.months[m]!.end);
     const { laggingKvar } = this.#study.record;
-    const { aboveKvar, belowKvar, paceKvar } = reach;
+    const limits = this.#limitsKvar;
+    const [mostKvar, leastKvar] = [limits[0]!, limits[1]!];
+    const [aboveKvar, belowKvar, paceKvar] = [limits[2]!, limits[3]!, limits[4]!];
     const [leastColumn, mostColumn] = [this.#leastKvar, this.#mostKvar];
     const sums = this.#wholeSums;
-    let [most, least] = [this.#mostBefore, this.#leastBefore];
+    const before = this.#beforeKvar;
+    let [most, least] = [before[0]!, before[1]!];
     let [leastLagging, mostLagging] = [sums.leastLagging[m]!, sums.mostLagging[m]!];
     let [mostSum, leastSum] = [sums.most[m]!, sums.least[m]!];
     for (let i = from; i < end; i++) {
@@ -206,7 +206,8 @@ export class MonthCells {
     sums.mostLagging[m] = mostLagging;
     sums.most[m] = mostSum;
     sums.least[m] = leastSum;
-    [this.#mostBefore, this.#leastBefore] = [most, least];
+    before[0] = most;
+    before[1] = least;
   }
 
   // Some of a month's intervals, from the columns that the whole was added up from.

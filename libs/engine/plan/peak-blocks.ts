@@ -76,6 +76,7 @@ export class PeakBlocks {
   #constantInto(squares: Float64Array, month: PeakMonth, run: number, mostKvar: number): void {
     const { activeKw, laggingKvar, leadingKvar } = this.#record;
     const { intervals, blockFrom, blocks } = month;
+    let [low, high] = [squares[0]!, squares[1]!];
     for (let b = run * RUN; b < Math.min((run + 1) * RUN, blocks); b++) {
       const [from, end] = blockFrom === null ? [b, b + 1] : [blockFrom[b]!, blockFrom[b + 1]!];
       let [kw, net] = [0, 0];
@@ -84,13 +85,19 @@ export class PeakBlocks {
         kw += activeKw[i]!;
         net += laggingKvar[i]! - leadingKvar[i]!;
       }
-      raise(squares, kw / (end - from), net / (end - from) - mostKvar, net / (end - from));
+      const square = (kw / (end - from)) ** 2;
+      net /= end - from;
+      low = Math.max(low, square + nearestSquare(net - mostKvar, net));
+      high = Math.max(high, square + farthestSquare(net - mostKvar, net));
     }
+    squares[0] = low;
+    squares[1] = high;
   }
 
   #betweenInto(squares: Float64Array, month: PeakMonth, run: number, { leastKvar, mostKvar }: ConnectedEnds): void {
     const { activeKw, laggingKvar, leadingKvar } = this.#record;
     const { intervals, blockFrom, blocks } = month;
+    let [low, high] = [squares[0]!, squares[1]!];
     for (let b = run * RUN; b < Math.min((run + 1) * RUN, blocks); b++) {
       const [from, end] = blockFrom === null ? [b, b + 1] : [blockFrom[b]!, blockFrom[b + 1]!];
       let [kw, netLo, netHi] = [0, 0, 0];
@@ -101,8 +108,14 @@ export class PeakBlocks {
         netLo += net - mostKvar[i]!;
         netHi += net - leastKvar[i]!;
       }
-      raise(squares, kw / (end - from), netLo / (end - from), netHi / (end - from));
+      const square = (kw / (end - from)) ** 2;
+      netLo /= end - from;
+      netHi /= end - from;
+      low = Math.max(low, square + nearestSquare(netLo, netHi));
+      high = Math.max(high, square + farthestSquare(netLo, netHi));
     }
+    squares[0] = low;
+    squares[1] = high;
   }
 }
 
@@ -114,12 +127,14 @@ export interface ConnectedEnds {
   mostKvar: Float64Array;
 }
 
-// Nearest to zero and farthest from it, of a block's net kvar between two ends.
-function raise(squares: Float64Array, kw: number, netLo: number, netHi: number): void {
-  const near = netLo > 0 ? netLo : Math.min(netHi, 0);
-  const far = -netLo > netHi ? netLo : netHi;
-  squares[0] = Math.max(squares[0]!, kw * kw + near * near);
-  squares[1] = Math.max(squares[1]!, kw * kw + far * far);
+function nearestSquare(lo: number, hi: number): number {
+  const near = lo > 0 ? lo : Math.min(hi, 0);
+  return near * near;
+}
+
+function farthestSquare(lo: number, hi: number): number {
+  const far = -lo > hi ? lo : hi;
+  return far * far;
 }
 
 function peakMonth(record: LoadRecord, shape: DemandShape, m: number): PeakMonth {
