@@ -76,16 +76,19 @@ export class PeakBlocks {
   #constantInto(squares: Float64Array, month: PeakMonth, run: number, mostKvar: number): void {
     const { activeKw, laggingKvar, leadingKvar } = this.#record;
     const { intervals, blockFrom, blocks } = month;
-    let [low, high] = [squares[0]!, squares[1]!];
+    let low = squares[0]!;
+    let high = squares[1]!;
     for (let b = run * RUN; b < Math.min((run + 1) * RUN, blocks); b++) {
-      const [from, end] = blockFrom === null ? [b, b + 1] : [blockFrom[b]!, blockFrom[b + 1]!];
+      const from = blockFrom === null ? b : blockFrom[b]!;
+      const end = blockFrom === null ? b + 1 : blockFrom[b + 1]!;
       let [kw, net] = [0, 0];
       for (let k = from; k < end; k++) {
         const i = intervals[k]!;
         kw += activeKw[i]!;
         net += laggingKvar[i]! - leadingKvar[i]!;
       }
-      const square = (kw / (end - from)) ** 2;
+      kw /= end - from;
+      const square = kw * kw;
       net /= end - from;
       low = Math.max(low, square + nearestSquare(net - mostKvar, net));
       high = Math.max(high, square + farthestSquare(net - mostKvar, net));
@@ -97,9 +100,11 @@ export class PeakBlocks {
   #betweenInto(squares: Float64Array, month: PeakMonth, run: number, { leastKvar, mostKvar }: ConnectedEnds): void {
     const { activeKw, laggingKvar, leadingKvar } = this.#record;
     const { intervals, blockFrom, blocks } = month;
-    let [low, high] = [squares[0]!, squares[1]!];
+    let low = squares[0]!;
+    let high = squares[1]!;
     for (let b = run * RUN; b < Math.min((run + 1) * RUN, blocks); b++) {
-      const [from, end] = blockFrom === null ? [b, b + 1] : [blockFrom[b]!, blockFrom[b + 1]!];
+      const from = blockFrom === null ? b : blockFrom[b]!;
+      const end = blockFrom === null ? b + 1 : blockFrom[b + 1]!;
       let [kw, netLo, netHi] = [0, 0, 0];
       for (let k = from; k < end; k++) {
         const i = intervals[k]!;
@@ -108,7 +113,8 @@ export class PeakBlocks {
         netLo += net - mostKvar[i]!;
         netHi += net - leastKvar[i]!;
       }
-      const square = (kw / (end - from)) ** 2;
+      kw /= end - from;
+      const square = kw * kw;
       netLo /= end - from;
       netHi /= end - from;
       low = Math.max(low, square + nearestSquare(netLo, netHi));
@@ -166,7 +172,8 @@ function meansOf(
   { intervals, blockFrom }: Pick<PeakMonth, 'intervals' | 'blockFrom'>,
   b: number,
 ): { kw: number; netKvar: number } {
-  const [from, end] = blockFrom === null ? [b, b + 1] : [blockFrom[b]!, blockFrom[b + 1]!];
+  const from = blockFrom === null ? b : blockFrom[b]!;
+  const end = blockFrom === null ? b + 1 : blockFrom[b + 1]!;
   let [kw, net] = [0, 0];
   for (let k = from; k < end; k++) {
     kw += activeKw[intervals[k]!]!;

@@ -166,14 +166,16 @@ export function controllerView(
   wantedKvar: Float64Array = new Float64Array(study.record.beginS.length),
 ): ControllerView {
   const { record, load } = study;
+  wantedInto(wantedKvar, load, tanFromPowerFactor(setPointPowerFactor), study.target.onExport);
+  const { intervalS, beginS, standby } = record;
+  return { intervalS, beginS, wantedKvar, voltageScale: study.voltageScale, standby };
+}
+
+function wantedInto(wantedKvar: Float64Array, load: BusLoad, tanSet: number, onExport: Target['onExport']): void {
   const { activeKw, reactiveKvar } = load;
-  const { onExport } = study.target;
-  const tanSet = tanFromPowerFactor(setPointPowerFactor);
   for (let i = 0; i < wantedKvar.length; i++) {
     wantedKvar[i] = reactiveKvar[i]! - targetKw(activeKw[i]!, onExport) * tanSet;
   }
-  const { intervalS, beginS, standby } = record;
-  return { intervalS, beginS, wantedKvar, voltageScale: study.voltageScale, standby };
 }
 
 /**
