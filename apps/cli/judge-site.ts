@@ -90,10 +90,17 @@ async function judge(
   const report = judgingProgress((progress) => say(`${file}: ${progress}`));
   const run = (record: LoadRecord | null): Promise<Judged> => {
     const zone = record === null ? estimateZone(site) : zoneTableOf(site.timeZone, record);
-    return pool.run<Judged>('judgeTask', { ...of, site, record, zone } satisfies JudgeTask, { report });
+    const handedOver = record === null ? [] : columnsOf(record);
+    return pool.run<Judged>('judgeTask', { ...of, site, record, zone } satisfies JudgeTask, { report, handedOver });
   };
   if (load === undefined) return inFile(file, () => run(null));
   return run((await readMeterRecord(line, load, site.timeZone)).record);
+}
+
+/** What takes up room of a record; the thread alone has need of it. */
+function columnsOf(record: LoadRecord): (Float64Array | Uint8Array | null)[] {
+  const { beginS, activeKw, laggingKvar, leadingKvar, voltageV, connectedKvar, standby } = record;
+  return [beginS, activeKw, laggingKvar, leadingKvar, voltageV, connectedKvar, standby];
 }
 
 async function tell(line: CommandLine, asked: readonly Asked[], judged: readonly Judged[]): Promise<void> {

@@ -4,17 +4,16 @@ import type { MessagePort } from 'node:worker_threads';
 import { planContent } from '#libs/contract/plan-content.js';
 import { recordBytes } from '#libs/contract/record-hash.js';
 import {
-  assessBank,
   assessEstimate,
   type BankTonight,
   ENGINE_VERSION,
   type EstimateOutcome,
   type EstimateResult,
+  firmOutcome,
   installedTonight,
   isEstimate,
   type LoadRecord,
   type Outcome,
-  planBank,
   planEstimate,
   type Result,
   type Site,
@@ -52,8 +51,7 @@ export interface Judged {
   outcome: Outcome | EstimateOutcome | null;
 }
 
-/** Shares of the whole at which planning, and weighing with the inputs moved, are done. */
-const PLANNED = 0.6;
+/** Share of the whole at which planning, and weighing with the inputs moved, are done. */
 const FIRM = 0.95;
 
 /** Plans or judges a site, puts the answer in words and draws its proposal where one is wanted. */
@@ -74,9 +72,7 @@ export function judgeTask({ task, port }: { task: JudgeTask; port: MessagePort }
 }
 
 function byRecord({ kind, site, zone }: JudgeTask, record: LoadRecord, watch: Watch): Outcome {
-  const judge = kind === 'plan' ? planBank : assessBank;
-  const planned = judge(site, record, zone, partOfWatch(watch, 0, PLANNED));
-  const computed = withRobustness(planned, partOfWatch(watch, PLANNED, FIRM));
+  const computed = firmOutcome(kind, { site, record, zone }, partOfWatch(watch, 0, FIRM));
   return { ...computed, result: putInWords(computed.result) };
 }
 

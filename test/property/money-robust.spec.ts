@@ -4,6 +4,7 @@ import { describe, expect, it } from 'vitest';
 import {
   assessBank,
   controllerView,
+  firmOutcome,
   grownStudy,
   type LoadRecord,
   lateView,
@@ -178,6 +179,17 @@ describe(`a bank's worth with its inputs moved (seed ${SEED})`, () => {
     const first = firm(site(), record);
     expect(columns()).toEqual(before);
     expect(firm(site(), record)).toEqual(first);
+  });
+
+  it('is the same where the site is studied once for both', () => {
+    const given = {
+      site: site({ catalogue: { stageKvar: [25], maxStages: 2 } }),
+      record: madeYear(SEED),
+      zone: UTC_TABLE,
+    };
+    const apart = (judge: typeof planBank) => withRobustness(judge(given.site, given.record, given.zone));
+    expect(firmOutcome('plan', given)).toEqual(apart(planBank));
+    expect(firmOutcome('assess', given)).toEqual(apart(assessBank));
   });
 
   it('has nothing to say before it is asked, and nothing of a site without a tariff', () => {

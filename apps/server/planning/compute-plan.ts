@@ -5,6 +5,7 @@ import {
   type BankOutcome,
   type EstimateOutcome,
   type EstimateResult,
+  firmOutcome,
   installedTonight,
   isEstimate,
   type LoadRecord,
@@ -38,8 +39,7 @@ export interface PlanTask {
   frame: ProposalFrame;
 }
 
-/** Shares of the whole at which planning, and weighing with the inputs moved, are done; the paper is drawn in the rest. */
-const PLANNED = 0.6;
+/** Share of the whole at which planning, and weighing with the inputs moved, are done; the paper is drawn in the rest. */
 const FIRM = 0.95;
 
 export interface PlanValue {
@@ -67,14 +67,14 @@ export function computePlan({ task, port }: { task: PlanTask; port: MessagePort 
 }
 
 function byRecord(task: PlanTask, record: LoadRecord, watch: Watch): Outcome {
-  const planned = judgedByRecord(task, record, partOfWatch(watch, 0, PLANNED));
-  const computed = withRobustness(planned, partOfWatch(watch, PLANNED, FIRM));
+  requireHashed(task, record);
+  const { kind, site, zone } = task;
+  const computed = firmOutcome(kind, { site, record, zone }, partOfWatch(watch, 0, FIRM));
   return { ...computed, result: putInWords(computed.result) };
 }
 
-function judgedByRecord(task: Omit<PlanTask, 'frame'>, record: LoadRecord, watch: Watch): Outcome {
+function requireHashed(task: Omit<PlanTask, 'frame'>, record: LoadRecord): void {
   if (recordHash(record) !== task.recordHash) throw new Error('the stored record is not the one that was hashed');
-  return (task.kind === 'plan' ? planBank : assessBank)(task.site, record, task.zone, watch);
 }
 
 /**
@@ -85,7 +85,8 @@ function judgedByRecord(task: Omit<PlanTask, 'frame'>, record: LoadRecord, watch
 export function judged(task: Omit<PlanTask, 'frame'>, watch: Watch): Outcome | EstimateOutcome {
   const { record, kind, site, zone } = task;
   if (record !== null) {
-    const outcome = judgedByRecord(task, record, watch);
+    requireHashed(task, record);
+    const outcome = (kind === 'plan' ? planBank : assessBank)(site, record, zone, watch);
     return { ...outcome, result: putInWords(outcome.result) };
   }
   const outcome = (kind === 'plan' ? planEstimate : assessEstimate)(site, zone);

@@ -11,6 +11,8 @@ export class EnergyBox {
   readonly selection: Selection;
   /** its only period is the month */
   readonly byMonth: boolean;
+  /** somebody looks at more of it than E_p */
+  wantsReactive = false;
   readonly low: EnergyReading;
   readonly high: EnergyReading;
 
@@ -62,6 +64,13 @@ export class EnergyBox {
   }
 }
 
+/** The boxes of a tariff that looks at whole months. */
+export interface WholeMonths {
+  energies: EnergyBox[];
+  /** of which nobody wants the kvar */
+  demands: DemandBox[];
+}
+
 /** The boxes a tariff's bounds ask for, each formed once a month. */
 export class BoxReadings {
   readonly #groupings: Groupings;
@@ -77,15 +86,15 @@ export class BoxReadings {
    * Energies of a selection.
    * @param selection the intervals
    * @param per length of a period
+   * @param wants what is looked at of it
    * @returns the box, shared by all who ask for the same
    */
-  energy(selection: Selection, per: Period): EnergyBox {
+  energy(selection: Selection, per: Period, wants: 'active' | 'reactive' = 'reactive'): EnergyBox {
     const key = `${per} ${selection.key}`;
-    const known = this.#energies.get(key);
-    if (known !== undefined) return known;
-    const made = new EnergyBox(this.#groupings.energyShape(selection, per));
-    this.#energies.set(key, made);
-    return made;
+    const box = this.#energies.get(key) ?? new EnergyBox(this.#groupings.energyShape(selection, per));
+    this.#energies.set(key, box);
+    if (wants === 'reactive') box.wantsReactive = true;
+    return box;
   }
 
   /**
@@ -93,23 +102,29 @@ export class BoxReadings {
    * @param selection the intervals
    * @param per length of a period
    * @param basis which kvar are held against each other
+   * @param wants what is looked at of it: kW and kVA, or the kvar too
    * @returns the box, shared by all who ask for the same
    */
-  demand(selection: Selection, per: Period, basis: ReactiveBasis): DemandBox {
+  demand(selection: Selection, per: Period, basis: ReactiveBasis, wants: 'kva' | 'kvar' = 'kvar'): DemandBox {
     const key = `${per} ${basis} ${selection.key}`;
-    const known = this.#demands.get(key);
-    if (known !== undefined) return known;
-    const periods = this.#groupings.periods(selection, per);
-    const blocks = this.#groupings.blocks(selection, per);
-    const made = new DemandBox({ selection, blocks, periods, basis });
-    this.#demands.set(key, made);
-    return made;
+    const box = this.#demands.get(key) ?? this.#demandBox(selection, per, basis);
+    this.#demands.set(key, box);
+    if (wants === 'kvar') box.wantsKvar = true;
+    return box;
   }
 
-  /** @returns the boxes where each is an energy of whole months, null where a tariff asks for more */
-  get wholeMonths(): EnergyBox[] | null {
-    const boxes = [...this.#energies.values()];
-    return this.#demands.size === 0 && boxes.every(({ byMonth }) => byMonth) ? boxes : null;
+  #demandBox(selection: Selection, per: Period, basis: ReactiveBasis): DemandBox {
+    const periods = this.#groupings.periods(selection, per);
+    const blocks = this.#groupings.blocks(selection, per);
+    return new DemandBox({ selection, blocks, periods, basis });
+  }
+
+  /** @returns the boxes where each is an energy, or a demand in kW or kVA, of whole months; null where a tariff asks for more */
+  get wholeMonths(): WholeMonths | null {
+    const energies = [...this.#energies.values()];
+    const demands = [...this.#demands.values()];
+    const areWhole = energies.every(({ byMonth }) => byMonth) && demands.every(({ byMonth }) => byMonth);
+    return areWhole && !demands.some(({ wantsKvar }) => wantsKvar) ? { energies, demands } : null;
   }
 
   /**

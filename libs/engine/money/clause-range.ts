@@ -65,7 +65,7 @@ export function fixedRange(clause: FixedClause): RangedClause {
  */
 export function energyRange(ground: RangeGround, clause: EnergyClause, path: string): RangedClause {
   const parts = pricedParts(ground, clause, path).map(({ selection, pricePerUnit }) => ({
-    box: ground.boxes.energy(selection, clause.per ?? 'month'),
+    box: ground.boxes.energy(selection, clause.per ?? 'month', clause.of === 'kVAh' ? 'reactive' : 'active'),
     blocks: clause.blocks ?? [{ upTo: null, pricePerUnit }],
   }));
   const energyOf = (box: EnergyBox, period: number): Range => {

@@ -79,7 +79,7 @@ function wholeUnitsOf({ wholeUnits }: ContractedDemandClause): QuantityRule {
  * @source derived: both parts rise with the demand
  */
 export function contractedRange(ground: RangeGround, clause: ContractedDemandClause): RangedClause {
-  const box = ground.boxes.demand(selectionOf(ground, clause), 'month', clause.reactive ?? 'lagging');
+  const box = ground.boxes.demand(selectionOf(ground, clause), 'month', clause.reactive ?? 'lagging', 'kva');
   const rule = wholeUnitsOf(clause);
   const part = (own: Range, name: keyof ContractedParts): Range => ({
     lo: contractedParts(clause, rule.own(own.lo), clause.contracted)[name],

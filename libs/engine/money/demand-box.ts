@@ -23,7 +23,9 @@ type Quantity = (typeof QUANTITIES)[number];
 export class DemandBox {
   /** periods of the month read */
   periods = 0;
-  readonly #shape: DemandShape;
+  /** somebody looks at more of it than kW and kVA */
+  wantsKvar = false;
+  readonly shape: DemandShape;
   readonly #periodOfBlock: Int32Array[] | null;
   readonly #low: Ends;
   readonly #high: Ends;
@@ -35,7 +37,7 @@ export class DemandBox {
 
   /** @param shape intervals, blocks, periods, basis */
   constructor(shape: DemandShape) {
-    this.#shape = shape;
+    this.shape = shape;
     const most = shape.periods?.most ?? 1;
     this.#periodOfBlock = shape.periods === null ? null : periodsOfBlocks(shape, shape.periods);
     this.#low = endsOf(most);
@@ -49,17 +51,38 @@ export class DemandBox {
    * @param box the meter's ends; the month's intervals stay as they are until the next month is read
    */
   read(m: number, box: MeterBox): void {
-    const { periods } = this.#shape;
+    const { periods } = this.shape;
     this.#m = m;
     this.#box = box;
     this.periods = periods === null ? 1 : periods.sizes[m]!.length;
     this.#formed.clear();
   }
 
+  /** @returns its only period is the month */
+  get byMonth(): boolean {
+    return this.shape.periods === null;
+  }
+
+  /**
+   * Takes one month's greatest means from somebody who has found them already; for whole months alone.
+   * @param maxKw greatest mean, ≥ 0, the same at both ends [kW]
+   * @param maxKva between what and what the greatest lies [kVA]
+   */
+  take(maxKw: number, maxKva: Range): void {
+    this.periods = 1;
+    this.#low.kw[0] = maxKw;
+    this.#high.kw[0] = maxKw;
+    this.#low.kva[0] = maxKva.lo;
+    this.#high.kva[0] = maxKva.hi;
+    this.#formed.clear();
+    this.#formed.add('kw');
+    this.#formed.add('kva');
+  }
+
   // A quantity is formed when it is first asked for; where blocks are means, all of them at once.
   #form(quantity: Quantity): void {
     if (this.#formed.has(quantity)) return;
-    const { blocks, periods } = this.#shape;
+    const { blocks, periods } = this.shape;
     if (periods !== null || !blocks.single[this.#m]!) {
       this.#formAll(this.#m, this.#box!);
       for (const one of QUANTITIES) this.#formed.add(one);
@@ -73,7 +96,7 @@ export class DemandBox {
   }
 
   #formAll(m: number, box: MeterBox): void {
-    const { blocks } = this.#shape;
+    const { blocks } = this.shape;
     for (const ends of [this.#low, this.#high]) {
       for (const column of Object.values(ends) as Float64Array[]) column.fill(0, 0, this.periods);
     }
@@ -87,7 +110,7 @@ export class DemandBox {
   }
 
   #singleKw(m: number, { low, high }: MeterBox): void {
-    const { intervals, monthFrom } = this.#shape.selection;
+    const { intervals, monthFrom } = this.shape.selection;
     const { activeKw: lowActiveKw } = low;
     const { activeKw: highActiveKw } = high;
     const end = monthFrom[m + 1]!;
@@ -103,7 +126,7 @@ export class DemandBox {
 
   // Greatest values stay in locals: a search forms hundreds of them.
   #singleKva(m: number, { low, high }: MeterBox): void {
-    const { intervals, monthFrom } = this.#shape.selection;
+    const { intervals, monthFrom } = this.shape.selection;
     const { activeKw: lowActiveKw, laggingKvar: lowLaggingKvar, leadingKvar: lowLeadingKvar } = low;
     const { activeKw: highActiveKw, laggingKvar: highLaggingKvar, leadingKvar: highLeadingKvar } = high;
     const end = monthFrom[m + 1]!;
@@ -128,7 +151,7 @@ export class DemandBox {
   }
 
   #singleKvar(m: number, { low, high }: MeterBox): void {
-    const { selection, basis } = this.#shape;
+    const { selection, basis } = this.shape;
     const { intervals, monthFrom } = selection;
     let [lowKvar, highKvar] = [0, 0];
     for (let k = monthFrom[m]!; k < monthFrom[m + 1]!; k++) {
@@ -147,7 +170,7 @@ export class DemandBox {
   // The interval of greatest kW is one of those whose upper end reaches the greatest lower end.
   #singleAtMaxKw(m: number, { low, high }: MeterBox): void {
     this.#form('kw');
-    const { intervals, monthFrom } = this.#shape.selection;
+    const { intervals, monthFrom } = this.shape.selection;
     const reached = this.#low.kw[0]!;
     const infinite = Number.POSITIVE_INFINITY;
     let [laggingLo, leadingLo, laggingHi, leadingHi] = [infinite, infinite, 0, 0];
@@ -166,7 +189,7 @@ export class DemandBox {
   }
 
   #meanBlocks(m: number, { low, high }: MeterBox): void {
-    const { selection, blocks } = this.#shape;
+    const { selection, blocks } = this.shape;
     const sizes = blocks.sizes[m]!;
     const columns = [low.activeKw, low.laggingKvar, low.leadingKvar, high.activeKw, high.laggingKvar, high.leadingKvar];
     for (const [c, column] of columns.entries()) {
@@ -188,7 +211,7 @@ export class DemandBox {
     raise(this.#high.kw, period, kwHi);
     raise(this.#low.kva, period, length(nearestToZero(kwLo, kwHi), nearestToZero(netLo, netHi)));
     raise(this.#high.kva, period, length(farthestFromZero(kwLo, kwHi), farthestFromZero(netLo, netHi)));
-    const { basis } = this.#shape;
+    const { basis } = this.shape;
     raise(this.#low.kvar, period, basis === 'net' ? netLo : reactiveOf(basis, laggingLo, leadingLo));
     raise(this.#high.kvar, period, basis === 'net' ? netHi : reactiveOf(basis, laggingHi, leadingHi));
   }

@@ -36,7 +36,7 @@ export function demandRange(ground: RangeGround, clause: DemandClause, path: str
   const pct = clause.scale === undefined ? null : scaleRange(clause.scale);
   const parts = pricedParts(ground, clause, path).map(
     ({ selection, pricePerUnit }): RangedPart => ({
-      box: ground.boxes.demand(selection, per, clause.reactive ?? 'lagging'),
+      box: ground.boxes.demand(selection, per, clause.reactive ?? 'lagging', 'kva'),
       factor: pct === null ? null : factorBox(ground, selection, per),
       rule: new QuantityRule(clause, ground.carriedRows++),
       pricePerUnit,
@@ -63,10 +63,10 @@ export function basisRange(
   period: number,
   { basis, kvaShare = 0 }: Pick<DemandClause, 'basis' | 'kvaShare'>,
 ): Range {
+  if (basis === 'kVA') return box.maxKva(period);
   const kw = box.maxKw(period);
   if (basis === 'kW') return kw;
   const kva = box.maxKva(period);
-  if (basis === 'kVA') return kva;
   return { lo: Math.max(kw.lo, kvaShare * kva.lo), hi: Math.max(kw.hi, kvaShare * kva.hi) };
 }
 

@@ -59,8 +59,9 @@ export class WindowMasks {
     for (const [m, month] of months.entries()) {
       monthFrom[m] = count;
       for (let i = month.from; i < month.end; i++) {
-        const held = (union === null || union.some((mask) => mask[i] === 1)) && (within === null || within[i] === 1);
-        if (held) intervals[count++] = i;
+        if (within !== null && within[i] === 0) continue;
+        if (union !== null && !isInAny(union, i)) continue;
+        intervals[count++] = i;
       }
     }
     monthFrom[months.length] = count;
@@ -90,8 +91,10 @@ export class WindowMasks {
       if (clause.months !== undefined && !clause.months.includes(month.month)) continue;
       for (let k = selection.monthFrom[m]!; k < selection.monthFrom[m + 1]!; k++) {
         const i = selection.intervals[k]!;
+        let count = 0;
+        for (let w = 0; w < masks.length; w++) count += masks[w]![i]!;
+        if (count === 1) continue;
         const holding = names.filter((_, w) => masks[w]![i] === 1);
-        if (holding.length === 1) continue;
         throw new InputProblem([
           {
             code: 'inconsistent',
@@ -103,6 +106,11 @@ export class WindowMasks {
       }
     }
   }
+}
+
+function isInAny(masks: readonly Uint8Array[], i: number): boolean {
+  for (let w = 0; w < masks.length; w++) if (masks[w]![i] === 1) return true;
+  return false;
 }
 
 function windowMask(calendar: TariffCalendar, window: TariffWindow): Uint8Array {

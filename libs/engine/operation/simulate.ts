@@ -97,17 +97,19 @@ export class Simulation {
     this.#next = end;
   }
 
-  // The common interval is two compares: everything else is in the state's own functions.
+  // The common interval is two compares: everything else is in the state's own functions. With all stages in more can't be
+  // had, with none in not less: so it is whenever a bank is too small for the load, and through many nights.
   #runPlainInto(connectedKvar: Float64Array, end: number): void {
     const state = this.#state;
     const { wantedKvar, beginS } = this.#view;
-    const band = state.bandKvar;
-    let level = state.levelKvar;
+    const { bandKvar: band, leastLevelKvar: least, mostLevelKvar: most } = state;
+    // a plus keeps the level a plain number: what a function returns would be looked at in every interval
+    let level = +state.levelKvar;
     for (let i = this.#next; i < end; i++) {
       const d = wantedKvar[i]! - level;
-      if (d > band || d < -band) {
+      if (d > band ? level < most : d < -band && level > least) {
         state.interval = i;
-        level = state.decide(beginS[i]!, wantedKvar[i]!, 1);
+        level = +state.decide(beginS[i]!, wantedKvar[i]!, 1);
       }
       connectedKvar[i] = level;
     }
@@ -144,6 +146,9 @@ class SwitchState {
   readonly switchings: Int32Array;
   readonly bandKvar: number;
   levelKvar: number;
+  /** levels with no stage in and with all, as they are added up while switching */
+  readonly leastLevelKvar: number;
+  readonly mostLevelKvar: number;
   /** the interval that is decided */
   interval = 0;
   readonly #bank: SwitchedBank;
@@ -163,6 +168,8 @@ class SwitchState {
     this.#control = control;
     this.switchings = new Int32Array(bank.stageCount);
     this.levelKvar = bank.fixedKvar;
+    this.leastLevelKvar = bank.fixedKvar;
+    this.mostLevelKvar = bank.classes.reduce((sum, { kvar, stages }) => sum + stages.length * kvar, bank.fixedKvar);
     this.bandKvar = bank.classes.length === 0 ? Number.POSITIVE_INFINITY : control.responseRatio * bank.smallestKvar;
     this.#on = new Uint8Array(bank.stageCount);
     this.#offSinceS = new Float64Array(bank.stageCount).fill(Number.NEGATIVE_INFINITY);
@@ -202,8 +209,7 @@ class SwitchState {
     return this.#settleLevel();
   }
 
-  // More is wanted and nothing is free, or less and nothing is in: the present level is the nearest there is. So it is
-  // whenever a bank is too small for the load, and through many nights.
+  // More is wanted and nothing is free, or less and nothing is in: the present level is the nearest there is.
   #canFollow(d: number): boolean {
     const { connected, free } = this.#decision;
     const left = d > 0 ? free : connected;

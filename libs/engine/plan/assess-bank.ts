@@ -1,6 +1,7 @@
 import { InputProblem, type Watch } from '../problem.js';
 import type { LoadRecord } from '../record/load-record.js';
 import type { ZoneTable } from '../record/zone-table.js';
+import type { JudgedOn } from './judged-on.js';
 import { moneyStudy } from './money-study.js';
 import type { Outcome } from './outcome.js';
 import { outcomeOf } from './outcome-of.js';
@@ -21,6 +22,20 @@ import { onlyWay } from './weighed-bank.js';
  * @source method-limits
  */
 export function assessBank(site: Site, record: LoadRecord, zone: ZoneTable, watch?: Watch): Outcome {
+  return assessOn(site, record, zone, watch).outcome;
+}
+
+/**
+ * The same with what it was judged on.
+ * @param site validated site with a `bank`
+ * @param record the meter's record
+ * @param zone the site's zone over the record
+ * @param watch progress and stopping
+ * @returns the outcome, study and money
+ * @throws InputProblem where the site has no bank or the inputs contradict each other
+ * @source method-limits
+ */
+export function assessOn(site: Site, record: LoadRecord, zone: ZoneTable, watch?: Watch): JudgedOn {
   if (site.bank === undefined) {
     throw new InputProblem([{ code: 'missing', path: 'bank', expected: 'the bank to judge', found: 'nothing' }]);
   }
@@ -40,5 +55,5 @@ export function assessBank(site: Site, record: LoadRecord, zone: ZoneTable, watc
     priced: onlyWay(site, money, { bank, control: settled.control }),
   });
   watch?.report(1);
-  return outcome;
+  return { outcome, study, money };
 }

@@ -2,6 +2,7 @@ import { billRangeOf, type RangedTariff } from '../money/bill-range.js';
 import type { MeterBox } from '../money/meter-box.js';
 import type { ControlReach } from '../operation/control-reach.js';
 import { type MeterAfter, meterAfterInto } from '../operation/meter-after.js';
+import { plainSum } from '../quantity/plain-sum.js';
 import { energyPowerFactor } from '../quantity/power-factor.js';
 import { primaryFromBus, type TransformerPassage } from '../supply/transformer-passage.js';
 import { ActiveSums } from './active-sums.js';
@@ -33,6 +34,9 @@ export interface CellSize {
   reach: Pick<ControlReach, 'aboveKvar' | 'belowKvar' | 'paceKvar'>;
 }
 
+/** Intervals that are worked on at a time. */
+const STRETCH = 2048;
+
 /** Bounds the bills of banks that are known by their size alone. */
 export class CellBounds {
   readonly #study: Study;
@@ -44,9 +48,10 @@ export class CellBounds {
   readonly #least: MeterAfter;
   readonly #most: MeterAfter;
   readonly #active: ActiveSums;
-  /** least and most connected in the interval before the month that is formed [kvar] */
-  #leastBefore = 0;
-  #mostBefore = 0;
+  /** nothing is connected at the least, and the columns say so already */
+  #noneIsLeast = false;
+  /** least and most connected in the interval before the stretch that is formed */
+  readonly #before = { leastKvar: new Float64Array(1), mostKvar: new Float64Array(1) };
 
   /**
    * @param study site and record
@@ -91,51 +96,79 @@ export class CellBounds {
    * @source derived: with more connected the meter lags less and leads more, whatever the controller does
    */
   cell(size: CellSize): BoundCell {
+    const { months } = this.#ranged.prepared.calendar;
     const cell: BoundCell = {
       leastBill: new Float64Array(0),
-      leastKvarh: new Float64Array(this.#ranged.prepared.calendar.months.length),
-      leastMovesKvar: [],
+      leastKvarh: new Float64Array(months.length),
+      leastMovesKvar: months.map(() => []),
       mostLowestFactor: 1,
     };
-    this.#leastBefore = 0;
-    this.#mostBefore = 0;
+    this.#before.leastKvar[0] = 0;
+    this.#before.mostKvar[0] = 0;
+    this.#noneIsLeast &&= size.wantedKvar === null;
     const bills = billRangeOf(this.#ranged, (m) => {
       this.#monthInto(size, m);
       this.#ranged.boxes.read(m, this.#box);
       this.#sumInto(cell, size, m);
     });
+    this.#noneIsLeast = size.wantedKvar === null;
     return { ...cell, leastBill: Float64Array.from(bills, ({ lo }) => lo) };
   }
 
   #monthInto(size: CellSize, m: number): void {
     const { record, load } = this.#study;
     const { from, end } = this.#ranged.prepared.calendar.months[m]!;
-    this.#connectedInto(size, from, end);
-    meterAfterInto(this.#least, { record, load, connectedKvar: this.#leastConnectedKvar }, from, end);
-    meterAfterInto(this.#most, { record, load, connectedKvar: this.#mostConnectedKvar }, from, end);
-    if (load.metering.at === 'primary') this.#activeInto(load.metering.passage, from, end);
+    // what a step leaves is read by the next while it is near
+    for (let at = from; at < end; at += STRETCH) {
+      const stop = Math.min(at + STRETCH, end);
+      this.#connectedInto(size, at, stop);
+      if (!this.#noneIsLeast) {
+        meterAfterInto(this.#least, { record, load, connectedKvar: this.#leastConnectedKvar }, at, stop);
+      }
+      meterAfterInto(this.#most, { record, load, connectedKvar: this.#mostConnectedKvar }, at, stop);
+      if (load.metering.at === 'primary') this.#activeInto(load.metering.passage, at, stop);
+    }
   }
 
   #connectedInto(size: CellSize, from: number, end: number): void {
     const { voltageScale } = this.#study;
-    const [least, most] = [this.#leastConnectedKvar, this.#mostConnectedKvar];
-    const { mostKvar, leastKvar, wantedKvar, leastWantedKvar, reach } = size;
+    const { mostKvar, wantedKvar, leastWantedKvar } = size;
     if (wantedKvar === null || leastWantedKvar === null) {
-      least.fill(0, from, end);
-      most.fill(mostKvar, from, end);
-    } else {
-      const { aboveKvar, belowKvar, paceKvar } = reach;
-      let [low, high] = [this.#leastBefore, this.#mostBefore];
-      for (let i = from; i < end; i++) {
-        high = Math.max(0, Math.min(mostKvar, Math.max(wantedKvar[i]! + aboveKvar, high - paceKvar)));
-        low = Math.max(0, Math.min(leastKvar, leastWantedKvar[i]! - belowKvar, low + paceKvar));
-        most[i] = high;
-        least[i] = low;
-      }
-      [this.#leastBefore, this.#mostBefore] = [low, high];
-    }
+      if (!this.#noneIsLeast) this.#leastConnectedKvar.fill(0, from, end);
+      this.#mostConnectedKvar.fill(mostKvar, from, end);
+    } else this.#controlledInto(size, wantedKvar, leastWantedKvar, { from, end });
     // a reach is finite only where no voltage scales the levels
+    const most = this.#mostConnectedKvar;
     if (voltageScale !== null) for (let i = from; i < end; i++) most[i]! *= voltageScale[i]!;
+  }
+
+  // Comparisons for Math.min and Math.max, which look at signs of zero and at what is no number: a search passes here most.
+  #controlledInto(
+    { mostKvar, leastKvar, reach }: CellSize,
+    wantedKvar: Float64Array,
+    leastWantedKvar: Float64Array,
+    { from, end }: { from: number; end: number },
+  ): void {
+    const { aboveKvar, belowKvar, paceKvar } = reach;
+    const [leastColumn, mostColumn] = [this.#leastConnectedKvar, this.#mostConnectedKvar];
+    const before = this.#before;
+    let [least, most] = [before.leastKvar[0]!, before.mostKvar[0]!];
+    for (let i = from; i < end; i++) {
+      const slowest = most - paceKvar;
+      most = wantedKvar[i]! + aboveKvar;
+      if (most < slowest) most = slowest;
+      if (most > mostKvar) most = mostKvar;
+      if (most < 0) most = 0;
+      mostColumn[i] = most;
+      const quickest = least + paceKvar;
+      least = leastWantedKvar[i]! - belowKvar;
+      if (least > quickest) least = quickest;
+      if (least > leastKvar) least = leastKvar;
+      if (least < 0) least = 0;
+      leastColumn[i] = least;
+    }
+    before.leastKvar[0] = least;
+    before.mostKvar[0] = most;
   }
 
   // Behind transformers their loss is convex in the connected kvar: most at an end, and no less than what the active
@@ -160,12 +193,8 @@ export class CellBounds {
     const [least, most] = [this.#leastConnectedKvar, this.#mostConnectedKvar];
     const { activeKw } = this.#box.high;
     const { laggingKvar } = this.#box.low;
-    let kvar = 0;
-    let lagging = 0;
-    for (let i = from; i < end; i++) {
-      kvar += least[i]!;
-      lagging += laggingKvar[i]!;
-    }
+    const kvar = this.#noneIsLeast ? 0 : plainSum(least, from, end);
+    const lagging = plainSum(laggingKvar, from, end);
     const active = this.#active.sum(m, activeKw, from, end);
     const isHeld = size.wantedKvar !== null && Number.isFinite(size.reach.belowKvar);
     cell.leastKvarh[m] = kvar * (this.#study.record.intervalS / 3600);

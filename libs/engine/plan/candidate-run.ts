@@ -6,10 +6,14 @@ import type { ControllerView } from '../operation/controller-view.js';
 import { meterAfterInto } from '../operation/meter-after.js';
 import { Simulation } from '../operation/simulate.js';
 import { switchedBank } from '../operation/switched-bank.js';
+import { plainSum } from '../quantity/plain-sum.js';
 import { energyPowerFactor } from '../quantity/power-factor.js';
 import type { ActiveSums } from './active-sums.js';
 import type { RunColumns } from './run-columns.js';
 import type { Study } from './study.js';
+
+/** Intervals that are worked on at a time. */
+const STRETCH = 2048;
 
 /** What a run shares with all others. */
 export interface RunGround {
@@ -72,34 +76,38 @@ export class CandidateRun {
     const { study, prepared, columns } = this.#ground;
     const m = this.months;
     const { from, end } = prepared.calendar.months[m]!;
-    this.#simulation.runInto(columns.connectedKvar, end);
-    const delivered = this.#deliveredInto(from, end);
     const { record, load } = study;
-    meterAfterInto(columns.meter, { record, load, connectedKvar: columns.connectedKvar }, from, end);
+    const given = { record, load, connectedKvar: columns.connectedKvar };
+    let [connected, lagging] = [0, 0];
+    // what a step leaves is read by the next while it is near
+    for (let at = from; at < end; at += STRETCH) {
+      const stop = Math.min(at + STRETCH, end);
+      this.#simulation.runInto(columns.connectedKvar, stop);
+      connected = plainSum(columns.connectedKvar, at, stop, connected);
+      this.#deliverInto(at, stop);
+      meterAfterInto(columns.meter, given, at, stop);
+      lagging = plainSum(columns.meter.laggingKvar, at, stop, lagging);
+    }
     this.afterTotals[m] = billMonth(prepared, m, columns.meter, this.#carried);
-    this.connectedKvarh[m] = (this.connectedKvarh[m - 1] ?? 0) + delivered;
-    this.#takeTarget(m, from, end);
+    const hoursOf = (kvar: number): number => (kvar * record.intervalS) / 3600;
+    this.connectedKvarh[m] = (this.connectedKvarh[m - 1] ?? 0) + hoursOf(connected);
+    this.laggingKvarh[m] = (this.laggingKvarh[m - 1] ?? 0) + hoursOf(lagging);
+    this.#takeTarget(m, lagging);
     this.switchings.push(this.#simulation.switchings());
   }
 
   // Losses are those of the nominal kvar; the meter sees what the voltage makes of it.
-  #deliveredInto(from: number, end: number): number {
+  #deliverInto(from: number, end: number): void {
     const { study, columns } = this.#ground;
     const { connectedKvar } = columns;
-    let sum = 0;
-    for (let i = from; i < end; i++) sum += connectedKvar[i]!;
     const { voltageScale } = study;
     if (voltageScale !== null) for (let i = from; i < end; i++) connectedKvar[i]! *= voltageScale[i]!;
-    return (sum * study.record.intervalS) / 3600;
   }
 
-  #takeTarget(m: number, from: number, end: number): void {
-    const { study, columns } = this.#ground;
-    const { activeKw, laggingKvar } = columns.meter;
-    const active = this.#ground.active.sum(m, activeKw, from, end);
-    let lagging = 0;
-    for (let i = from; i < end; i++) lagging += laggingKvar[i]!;
-    this.laggingKvarh[m] = (this.laggingKvarh[m - 1] ?? 0) + (lagging * study.record.intervalS) / 3600;
+  #takeTarget(m: number, lagging: number): void {
+    const { study, prepared, columns, active: sums } = this.#ground;
+    const { from, end } = prepared.calendar.months[m]!;
+    const active = sums.sum(m, columns.meter.activeKw, from, end);
     const factor = energyPowerFactor(active, lagging);
     this.lowestFactor = Math.min(this.lowestFactor, factor ?? 1);
     const meets = factor === null || factor >= study.site.targetPowerFactor * (1 - 1e-12);

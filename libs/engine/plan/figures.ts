@@ -78,7 +78,7 @@ export function recordCounts(record: Omit<RecordSummary, 'notes' | 'gradeRule'>)
 function requirementFigures(study: Study, result: Result): Figure[] {
   const { requirement } = result;
   const worst = study.needKvar.indexOf(requirement.maxKvar);
-  const ascending = Float64Array.from(study.needKvar).sort();
+  const ascending = study.needKvar.slice().sort();
   const load = {
     activeKw: study.load.activeKw[worst]!,
     reactiveKvar: study.load.reactiveKvar[worst]!,

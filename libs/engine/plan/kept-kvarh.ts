@@ -11,6 +11,8 @@ const SUM_SHARE = 1e-9;
 export class KeptKvarh {
   /** by what is wanted, then by the intervals looked back */
   readonly #counts = new Map<Float64Array, Map<number, WantedCounts>>();
+  /** written over by each count [kvar] */
+  #least: Float64Array | null = null;
 
   /**
    * The fewest kvarh of a bank.
@@ -33,7 +35,10 @@ export class KeptKvarh {
   #countsOf(wantedKvar: Float64Array, before: number): WantedCounts {
     const known = this.#counts.get(wantedKvar) ?? new Map<number, WantedCounts>();
     this.#counts.set(wantedKvar, known);
-    const made = known.get(before) ?? new WantedCounts(wantedKvar, before);
+    const counted = known.get(before);
+    if (counted !== undefined) return counted;
+    this.#least ??= new Float64Array(wantedKvar.length);
+    const made = new WantedCounts(before === 0 ? wantedKvar : leastOfLast(wantedKvar, before, this.#least));
     known.set(before, made);
     return made;
   }
@@ -47,8 +52,8 @@ class WantedCounts {
   /** lower ends of their steps, added up [kvar] */
   readonly #sumFrom = new Float64Array(STEPS + 1);
 
-  constructor(wantedKvar: Float64Array, before: number) {
-    const least = before === 0 ? wantedKvar : leastOfLast(wantedKvar, before);
+  /** @param least wanted of each interval and of those before it [kvar] */
+  constructor(least: Float64Array) {
     let greatest = 0;
     for (let i = 0; i < least.length; i++) if (least[i]! > greatest) greatest = least[i]!;
     this.#stepKvar = greatest / STEPS;

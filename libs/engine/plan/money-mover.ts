@@ -1,11 +1,10 @@
 import type { BreakEven, MoneyQuantity, PickChange, Recommended } from '../money/money-result.js';
-import { InputProblem } from '../problem.js';
 import { changeTowards } from './change-towards.js';
-import { grownStudy } from './grown-study.js';
 import { COMMON_LOADS, LOAD_SEARCH, LOADS_TRIED } from './load-moves.js';
+import { MovedLoads } from './moved-loads.js';
 import { withCapacitance } from './robustness.js';
 import { NEAR_VALUE } from './search.js';
-import { type Scale, scaleOf, type Working, type WorthAgain, weighAgain, workOn } from './weigh-again.js';
+import { type Scale, type Working, type WorthAgain, weighAgain, workOn } from './weigh-again.js';
 import type { WeighedBank } from './weighed-bank.js';
 
 /** Least and greatest factor that is tried. */
@@ -42,10 +41,12 @@ export class MoneyMover {
   readonly #known = new Map<string, WorthAgain | null>();
   readonly #working = new Map<Recommended, Working>();
   readonly #present = new Map<Recommended, WorthAgain>();
+  readonly #loads: MovedLoads;
 
   /** @param weighed ways and record */
   constructor(weighed: WeighedWays) {
     this.#weighed = weighed;
+    this.#loads = new MovedLoads(weighed.scale);
   }
 
   /**
@@ -110,7 +111,7 @@ export class MoneyMover {
   #loaded(way: WeighedBank, factor: number): WorthAgain | null {
     const { ways } = this.#weighed;
     const asked = COMMON_LOADS.includes(factor) ? ways.filter(({ bank }) => bank.groups.length > 0) : [way];
-    const found = underLoad(this.#weighed.scale, asked, factor);
+    const found = this.#loads.under(asked, factor);
     for (const [k, one] of asked.entries()) this.#known.set(keyOf(one, 'load', factor), found[k]!);
     return found[asked.indexOf(way)]!;
   }
@@ -185,31 +186,4 @@ const NOTHING: WorthAgain = { savingPerYear: 0, targetMet: false, gain: 0, cost:
 
 function keyOf(way: WeighedBank, quantity: TriedQuantity, factor: number): string {
   return `${way.name} ${quantity} ${factor}`;
-}
-
-/**
- * Ways on a record whose load is moved.
- * @param scale the record as metered
- * @param ways with a bank each
- * @param factor on the load
- * @returns their worths, null where the transformers can't carry the load
- * @source method-robustness
- */
-export function underLoad(
-  { study, money }: Scale,
-  ways: readonly WeighedBank[],
-  factor: number,
-): (WorthAgain | null)[] {
-  const grown = nullWhereTooLarge(() => scaleOf(grownStudy(study, factor), money));
-  if (grown === null) return ways.map(() => null);
-  return ways.map((way) => nullWhereTooLarge(() => weighAgain(grown, way, workOn(grown, way.bank, way.control))));
-}
-
-function nullWhereTooLarge<T>(work: () => T): T | null {
-  try {
-    return work();
-  } catch (problem) {
-    if (problem instanceof InputProblem && problem.code === 'load-too-large') return null;
-    throw problem;
-  }
 }

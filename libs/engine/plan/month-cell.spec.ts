@@ -20,6 +20,16 @@ const TARIFF: Tariff = {
     { name: 'energy', kind: 'energy', of: 'kVAh', pricePerUnit: 0.1 },
     { name: 'reactive', kind: 'kvarhBeyondRatio', freeRatio: 0.33, pricePerUnit: 0.05 },
     { name: 'by day', kind: 'kvarhBeyondRatio', freeRatio: 0.2, pricePerUnit: 0.02, windows: ['day'] },
+    { name: 'demand', kind: 'demand', basis: 'kVA', pricePerUnit: 5 },
+    { name: 'demand by day', kind: 'demand', basis: 'kWOrKvaShare', kvaShare: 0.95, pricePerUnit: 3, windows: ['day'] },
+    {
+      name: 'contract',
+      kind: 'contractedDemand',
+      basis: 'kVA',
+      contracted: 150,
+      pricePerUnit: 2,
+      overrunPricePerUnit: 4,
+    },
     { name: 'leading', kind: 'kvarhBeyondRatio', reactive: 'leading', freeRatio: 0, pricePerUnit: 0.03 },
     {
       name: 'bonus',
@@ -35,7 +45,9 @@ function madeStudy(random: Chance, parts: Partial<Site> = {}) {
   const swung = load.reactiveKvar.map((kvar) => kvar - (random.next() < 0.1 ? 150 : 0));
   const record = madeRecord({ activeKw: load.activeKw, reactiveKvar: swung, intervalS: 3 * 3600 });
   const study = studySite(madeSite(parts), record, UTC_TABLE);
-  return { study, ranged: rangeTariff(prepareTariff(TARIFF, record, UTC_TABLE)) };
+  // demand as read in single intervals, and in means of two
+  const demandS = random.oneOf([3, 6]) * 3600;
+  return { study, ranged: rangeTariff(prepareTariff({ ...TARIFF, demandS }, record, UTC_TABLE)) };
 }
 
 function madeSize(random: Chance, wantedKvar: Float64Array): CellSize {
@@ -83,11 +95,12 @@ describe(`bounds added up month by month (seed ${SEED})`, () => {
       const made = madeStudy(random, parts);
       expect(MonthCells.of(made.study, made.ranged)).toBeNull();
     }
-    const demand: Tariff = { clauses: [{ name: 'demand', kind: 'demand', basis: 'kVA', pricePerUnit: 5 }] };
+    const demand: Tariff = { clauses: [{ name: 'demand', kind: 'demand', basis: 'kVA', per: 'day', pricePerUnit: 5 }] };
+    const kvar: Tariff = { clauses: [{ name: 'kvar', kind: 'kvarBeyondRatio', ratio: 0.3, pricePerUnit: 5 }] };
     const byHour: Tariff = {
       clauses: [{ name: 'hourly', kind: 'kvarhBeyondRatio', per: 'hour', freeRatio: 0.3, pricePerUnit: 0.1 }],
     };
-    for (const tariff of [demand, byHour]) {
+    for (const tariff of [demand, kvar, byHour]) {
       expect(MonthCells.of(study, rangeTariff(prepareTariff(tariff, study.record, UTC_TABLE)))).toBeNull();
     }
   });

@@ -1,8 +1,10 @@
 import { billRangeOf, type RangedTariff } from '../money/bill-range.js';
-import type { EnergyBox } from '../money/box-readings.js';
+import type { EnergyBox, WholeMonths } from '../money/box-readings.js';
+import type { DemandBox } from '../money/demand-box.js';
 import { energyPowerFactor } from '../quantity/power-factor.js';
 import type { BoundCell, CellSize } from './bound-cell.js';
 import { leastMoves } from './least-moves.js';
+import { PeakBlocks } from './peak-blocks.js';
 import type { Study } from './study.js';
 
 /** Sums between the ends of what may be connected, by month; kvar times intervals. */
@@ -26,28 +28,38 @@ interface MeteredSums {
   leadingKvar: Float64Array;
 }
 
+/** Intervals that are added up at a time. */
+const STRETCH = 2048;
+
 /**
- * The bounds of `CellBounds` where the meter stands at the bus and a tariff looks at nothing but energies of whole months:
- * lagging' = max(lagging − B, 0) and leading' = leading + max(B − lagging, 0) are added up as they are formed, and no
- * column is written. A search forms a hundred of them before it simulates anything.
+ * The bounds of `CellBounds` where the meter stands at the bus and a tariff looks at nothing but energies of whole months and
+ * their greatest kW and kVA: lagging' = max(lagging − B, 0) and leading' = leading + max(B − lagging, 0) are added up as
+ * they are formed, and no column of the meter is written. A search forms a hundred of them before it simulates anything.
  */
 export class MonthCells {
   readonly #study: Study;
   readonly #ranged: RangedTariff;
   readonly #whole: MeteredSums;
   readonly #parts: MeteredSums[];
+  readonly #demands: { box: DemandBox; peaks: PeakBlocks }[];
   readonly #leastKvar: Float64Array;
   readonly #mostKvar: Float64Array;
   readonly #wholeSums: MonthSums;
   readonly #partSums: MonthSums;
+  // In columns, so that the kernel is compiled once for sizes of any make.
+  /** most and least of a size, its reach above and below, its pace [kvar] */
+  readonly #limitsKvar = new Float64Array(5);
+  /** most and least connected in the interval before the stretch that is formed [kvar] */
+  readonly #beforeKvar = new Float64Array(2);
 
   /**
    * @param study site and record
    * @param ranged the tariff, ready for bounds
-   * @param boxes its boxes, each an energy of whole months
+   * @param boxes its boxes
    */
-  constructor(study: Study, ranged: RangedTariff, boxes: readonly EnergyBox[]) {
-    const n = study.record.beginS.length;
+  constructor(study: Study, ranged: RangedTariff, { energies, demands }: WholeMonths) {
+    const { record } = study;
+    const n = record.beginS.length;
     this.#study = study;
     this.#ranged = ranged;
     this.#leastKvar = new Float64Array(n);
@@ -57,7 +69,8 @@ export class MonthCells {
     this.#whole = this.#metered(null, all, this.#monthFrom());
     this.#wholeSums = monthSums(ranged.prepared.calendar.months.length);
     this.#partSums = monthSums(ranged.prepared.calendar.months.length);
-    this.#parts = boxes.map((box) => this.#metered(box, box.selection.intervals, box.selection.monthFrom));
+    this.#parts = energies.map((box) => this.#metered(box, box.selection.intervals, box.selection.monthFrom));
+    this.#demands = demands.map((box) => ({ box, peaks: new PeakBlocks(record, box.shape) }));
   }
 
   /**
@@ -82,41 +95,54 @@ export class MonthCells {
    */
   cell(size: CellSize): BoundCell {
     const { months } = this.#ranged.prepared.calendar;
-    const hours = this.#study.record.intervalS / 3600;
-    const leastKvarh = new Float64Array(months.length);
-    const leastMovesKvar: number[][] = [];
-    const isHeld = size.wantedKvar !== null && Number.isFinite(size.reach.belowKvar);
-    let mostLowestFactor = 1;
-    if (size.wantedKvar === null || size.leastWantedKvar === null) this.#sizeInto(size.mostKvar);
-    else this.#controlledInto(size, size.wantedKvar, size.leastWantedKvar);
+    const cell = {
+      leastKvarh: new Float64Array(months.length),
+      leastMovesKvar: months.map((): number[] => []),
+      mostLowestFactor: 1,
+    };
+    const { aboveKvar, belowKvar, paceKvar } = size.reach;
+    this.#limitsKvar.set([size.mostKvar, size.leastKvar, aboveKvar, belowKvar, paceKvar]);
+    this.#beforeKvar.fill(0);
+    const bills = billRangeOf(this.#ranged, (m) => {
+      this.#monthInto(size, m);
+      this.#sumInto(cell, size, m);
+      this.#read(m, size);
+    });
+    return { ...cell, leastBill: Float64Array.from(bills, ({ lo }) => lo) };
+  }
+
+  #sumInto(cell: Omit<BoundCell, 'leastBill'>, size: CellSize, m: number): void {
+    const { from, end } = this.#ranged.prepared.calendar.months[m]!;
     const { least, leastLagging } = this.#wholeSums;
-    for (const [m, { from, end }] of months.entries()) {
-      leastKvarh[m] = least[m]! * hours;
-      const factor = energyPowerFactor(this.#whole.activeKw[m]!, leastLagging[m]!);
-      mostLowestFactor = Math.min(mostLowestFactor, factor ?? 1);
-      leastMovesKvar[m] = isHeld ? leastMoves(this.#leastKvar, this.#mostKvar, from, end) : [];
-    }
-    const leastBill = Float64Array.from(
-      billRangeOf(this.#ranged, (m) => this.#read(m, size)),
-      ({ lo }) => lo,
-    );
-    return { leastBill, leastKvarh, leastMovesKvar, mostLowestFactor };
+    const isHeld = size.wantedKvar !== null && Number.isFinite(size.reach.belowKvar);
+    cell.leastKvarh[m] = least[m]! * (this.#study.record.intervalS / 3600);
+    if (isHeld) cell.leastMovesKvar[m] = leastMoves(this.#leastKvar, this.#mostKvar, from, end);
+    const factor = energyPowerFactor(this.#whole.activeKw[m]!, leastLagging[m]!);
+    cell.mostLowestFactor = Math.min(cell.mostLowestFactor, factor ?? 1);
   }
 
   // Σ max(B − lagging, 0) = ΣB − Σ lagging + Σ max(lagging − B, 0)
   #read(m: number, size: CellSize): void {
     const hours = this.#study.record.intervalS / 3600;
     for (const part of this.#parts) {
-      const sums = this.#sumsOf(part, m, size);
       const active = part.activeKw[m]! * hours;
+      if (part.box?.wantsReactive !== true) {
+        part.box?.low.take(m, active, Number.NaN, Number.NaN);
+        part.box?.high.take(m, active, Number.NaN, Number.NaN);
+        continue;
+      }
+      const sums = this.#sumsOf(part, m, size);
       const lagging = part.laggingKvar[m]!;
       const leading = part.leadingKvar[m]!;
       const [leastLagging, mostLagging] = [sums.leastLagging[m]!, sums.mostLagging[m]!];
       const leastLeading = leading + Math.max(sums.least[m]! - lagging + mostLagging, 0);
       const mostLeading = leading + Math.max(sums.most[m]! - lagging + leastLagging, 0);
-      part.box?.low.take(m, active, leastLagging * hours, leastLeading * hours);
-      part.box?.high.take(m, active, mostLagging * hours, mostLeading * hours);
+      part.box.low.take(m, active, leastLagging * hours, leastLeading * hours);
+      part.box.high.take(m, active, mostLagging * hours, mostLeading * hours);
     }
+    const isControlled = size.wantedKvar !== null && size.leastWantedKvar !== null;
+    const ends = isControlled ? { leastKvar: this.#leastKvar, mostKvar: this.#mostKvar } : null;
+    for (const { box, peaks } of this.#demands) box.take(peaks.maxKw(m), peaks.maxKva(m, size.mostKvar, ends));
   }
 
   #sumsOf(part: MeteredSums, m: number, size: CellSize): MonthSums {
@@ -125,61 +151,63 @@ export class MonthCells {
     return this.#partSums;
   }
 
-  // The same kvar throughout: all of them may be out, or in.
-  #sizeInto(mostKvar: number): void {
-    const { laggingKvar } = this.#study.record;
+  #monthInto(size: CellSize, m: number): void {
+    const { from, end } = this.#ranged.prepared.calendar.months[m]!;
+    const { wantedKvar, leastWantedKvar, mostKvar } = size;
     const sums = this.#wholeSums;
-    for (const [m, { from, end }] of this.#ranged.prepared.calendar.months.entries()) {
-      let left = 0;
-      for (let i = from; i < end; i++) {
-        const beyond = laggingKvar[i]! - mostKvar;
-        if (beyond > 0) left += beyond;
-      }
-      sums.leastLagging[m] = left;
+    sums.most[m] = 0;
+    sums.least[m] = 0;
+    sums.leastLagging[m] = 0;
+    sums.mostLagging[m] = 0;
+    if (wantedKvar === null || leastWantedKvar === null) {
+      // The same kvar throughout: all of them may be out, or in.
+      sums.leastLagging[m] = sumBeyond(this.#study.record.laggingKvar, mostKvar, from, end);
       sums.mostLagging[m] = this.#whole.laggingKvar[m]!;
       sums.most[m] = mostKvar * (end - from);
-      sums.least[m] = 0;
+      return;
     }
+    for (let at = from; at < end; at += STRETCH) this.#controlledInto(wantedKvar, leastWantedKvar, m, at);
   }
 
   // biome-ignore lint/complexity/noExcessiveCognitiveComplexity: a kernel; its sums stay in locals
-  #controlledInto(
-    { mostKvar, leastKvar, reach }: CellSize,
-    wantedKvar: Float64Array,
-    leastWantedKvar: Float64Array,
-  ): void {
+  #controlledInto(wantedKvar: Float64Array, leastWantedKvar: Float64Array, m: number, from: number): void {
+    const end = Math.min(from + STRETCH, this.#ranged.prepared.calendar.months[m]!.end);
     const { laggingKvar } = this.#study.record;
-    const { aboveKvar, belowKvar, paceKvar } = reach;
-    let [most, least] = [0, 0];
+    const limits = this.#limitsKvar;
+    const [mostKvar, leastKvar] = [limits[0]!, limits[1]!];
+    const [aboveKvar, belowKvar, paceKvar] = [limits[2]!, limits[3]!, limits[4]!];
     const [leastColumn, mostColumn] = [this.#leastKvar, this.#mostKvar];
     const sums = this.#wholeSums;
-    for (const [m, { from, end }] of this.#ranged.prepared.calendar.months.entries()) {
-      let [leastLagging, mostLagging, mostSum, leastSum] = [0, 0, 0, 0];
-      for (let i = from; i < end; i++) {
-        const slowest = most - paceKvar;
-        most = wantedKvar[i]! + aboveKvar;
-        if (most < slowest) most = slowest;
-        if (most > mostKvar) most = mostKvar;
-        if (most < 0) most = 0;
-        const quickest = least + paceKvar;
-        least = leastWantedKvar[i]! - belowKvar;
-        if (least > quickest) least = quickest;
-        if (least > leastKvar) least = leastKvar;
-        if (least < 0) least = 0;
-        mostColumn[i] = most;
-        leastColumn[i] = least;
-        mostSum += most;
-        leastSum += least;
-        const beyondMost = laggingKvar[i]! - most;
-        const beyondLeast = laggingKvar[i]! - least;
-        if (beyondMost > 0) leastLagging += beyondMost;
-        if (beyondLeast > 0) mostLagging += beyondLeast;
-      }
-      sums.leastLagging[m] = leastLagging;
-      sums.mostLagging[m] = mostLagging;
-      sums.most[m] = mostSum;
-      sums.least[m] = leastSum;
+    const before = this.#beforeKvar;
+    let [most, least] = [before[0]!, before[1]!];
+    let [leastLagging, mostLagging] = [sums.leastLagging[m]!, sums.mostLagging[m]!];
+    let [mostSum, leastSum] = [sums.most[m]!, sums.least[m]!];
+    for (let i = from; i < end; i++) {
+      const slowest = most - paceKvar;
+      most = wantedKvar[i]! + aboveKvar;
+      if (most < slowest) most = slowest;
+      if (most > mostKvar) most = mostKvar;
+      if (most < 0) most = 0;
+      const quickest = least + paceKvar;
+      least = leastWantedKvar[i]! - belowKvar;
+      if (least > quickest) least = quickest;
+      if (least > leastKvar) least = leastKvar;
+      if (least < 0) least = 0;
+      mostColumn[i] = most;
+      leastColumn[i] = least;
+      mostSum += most;
+      leastSum += least;
+      const beyondMost = laggingKvar[i]! - most;
+      const beyondLeast = laggingKvar[i]! - least;
+      if (beyondMost > 0) leastLagging += beyondMost;
+      if (beyondLeast > 0) mostLagging += beyondLeast;
     }
+    sums.leastLagging[m] = leastLagging;
+    sums.mostLagging[m] = mostLagging;
+    sums.most[m] = mostSum;
+    sums.least[m] = leastSum;
+    before[0] = most;
+    before[1] = least;
   }
 
   // Some of a month's intervals, from the columns that the whole was added up from.
@@ -234,4 +262,14 @@ export class MonthCells {
 function monthSums(months: number): MonthSums {
   const column = (): Float64Array => new Float64Array(months);
   return { leastLagging: column(), mostLagging: column(), most: column(), least: column() };
+}
+
+// What of a column lies beyond a value, added up.
+function sumBeyond(column: Float64Array, value: number, from: number, end: number): number {
+  let sum = 0;
+  for (let i = from; i < end; i++) {
+    const beyond = column[i]! - value;
+    if (beyond > 0) sum += beyond;
+  }
+  return sum;
 }

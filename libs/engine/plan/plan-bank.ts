@@ -4,6 +4,7 @@ import { type Remark, remark, type Watch } from '../problem.js';
 import type { LoadRecord } from '../record/load-record.js';
 import type { ZoneTable } from '../record/zone-table.js';
 import { type Chosen, chooseBank } from './choose-bank.js';
+import type { JudgedOn } from './judged-on.js';
 import { type MoneyStudy, moneyStudy } from './money-study.js';
 import type { Outcome } from './outcome.js';
 import { outcomeOf } from './outcome-of.js';
@@ -27,17 +28,25 @@ import { onlyWay } from './weighed-bank.js';
  * @source method-layout
  */
 export function planBank(site: Site, record: LoadRecord, zone: ZoneTable, watch?: Watch): Outcome {
-  const study = studySite(site, record, zone);
+  return planOn(studySite(site, record, zone), site, watch).outcome;
+}
+
+/**
+ * Designs the bank on a study.
+ * @param study site and record
+ * @param site validated site; its own `bank` lends nothing
+ * @param watch progress and stopping
+ * @returns the outcome with the money it was weighed by
+ * @throws InputProblem where the inputs contradict each other, Stopped where the watch says so
+ * @source method-layout
+ */
+export function planOn(study: Study, site: Site, watch?: Watch): JudgedOn {
   watch?.report(0.05);
   const money = moneyStudy(study, site);
-  if (money?.prices && site.catalogue?.stageKvar !== undefined) {
-    const outcome = planByMoney(study, site, money, watch);
-    watch?.report(1);
-    return outcome;
-  }
-  const outcome = planByTarget(study, site, money, watch);
+  const isSearch = money?.prices != null && site.catalogue?.stageKvar !== undefined;
+  const outcome = isSearch ? planByMoney(study, site, money, watch) : planByTarget(study, site, money, watch);
   watch?.report(1);
-  return outcome;
+  return { outcome, study, money };
 }
 
 function planByTarget(study: Study, site: Site, money: MoneyStudy | null, watch?: Watch): Outcome {

@@ -96,7 +96,7 @@ export function planByMoney(study: Study, site: Site, money: MoneyStudy, watch?:
 function doNothing({ study, site, money }: Asked): Way {
   const { bank } = settleBank({ stages: [] }, site.frequencyHz);
   const { control, assumptions } = settleControl(site.control, bank, study.site);
-  const operated = asMetered(study, operate(study, bank, control));
+  const operated = asMetered(study, control);
   const priced = priceBank(study, money, { bank: null, operated, switchKind: null, isNew: false });
   return wayOf(study, {
     name: 'do nothing',
@@ -109,11 +109,21 @@ function doNothing({ study, site, money }: Asked): Way {
   });
 }
 
-// The record as metered, whatever an old bank did while it was taken.
-function asMetered(study: Study, operated: Operated): Operated {
-  const { record } = study;
-  const meter = { activeKw: record.activeKw, laggingKvar: record.laggingKvar, leadingKvar: record.leadingKvar };
-  return { ...operated, meter, months: operationMonths(meter, study.months, record.intervalS / 3600) };
+// The record as metered, whatever an old bank did while it was taken; nothing is connected.
+function asMetered({ record, load, months }: Study, control: Control): Operated {
+  const { beginS, intervalS, activeKw, laggingKvar, leadingKvar } = record;
+  const meter = { activeKw, laggingKvar, leadingKvar };
+  const connectedKvar = new Float64Array(beginS.length);
+  return {
+    beginS,
+    intervalS,
+    load,
+    run: { connectedKvar, switchings: new Int32Array(0), connectedIntervals: new Float64Array(0) },
+    deliveredKvar: connectedKvar,
+    meter,
+    control,
+    months: operationMonths(meter, months, intervalS / 3600),
+  };
 }
 
 function keepTodays({ study, site, money }: Asked): Way[] {

@@ -156,18 +156,26 @@ export function operate(
  * What a controller sees of the record at a set point: wanted = Q − P⁺·tan φ_set at the bus.
  * @param study site and record
  * @param setPointPowerFactor λ steered towards
+ * @param wantedKvar receives what is wanted, length n; new where absent [kvar]
  * @returns columns of length n
  * @source method-controller
  */
-export function controllerView(study: Study, setPointPowerFactor: number): ControllerView {
+export function controllerView(
+  study: Study,
+  setPointPowerFactor: number,
+  wantedKvar: Float64Array = new Float64Array(study.record.beginS.length),
+): ControllerView {
   const { record, load } = study;
-  const tanSet = tanFromPowerFactor(setPointPowerFactor);
-  const wantedKvar = new Float64Array(record.beginS.length);
-  for (let i = 0; i < wantedKvar.length; i++) {
-    wantedKvar[i] = load.reactiveKvar[i]! - targetKw(load.activeKw[i]!, study.target.onExport) * tanSet;
-  }
+  wantedInto(wantedKvar, load, tanFromPowerFactor(setPointPowerFactor), study.target.onExport);
   const { intervalS, beginS, standby } = record;
   return { intervalS, beginS, wantedKvar, voltageScale: study.voltageScale, standby };
+}
+
+function wantedInto(wantedKvar: Float64Array, load: BusLoad, tanSet: number, onExport: Target['onExport']): void {
+  const { activeKw, reactiveKvar } = load;
+  for (let i = 0; i < wantedKvar.length; i++) {
+    wantedKvar[i] = reactiveKvar[i]! - targetKw(activeKw[i]!, onExport) * tanSet;
+  }
 }
 
 /**

@@ -49,12 +49,13 @@ export interface WorthAgain {
  * A record's bills before anything is done.
  * @param study site and record
  * @param money the site's money
+ * @param columns what simulations on it write into in turn; new ones where absent
  * @returns what ways are weighed on
  * @source method-money
  */
-export function scaleOf(study: Study, money: MoneyStudy): Scale {
+export function scaleOf(study: Study, money: MoneyStudy, columns: RunColumns = meterColumns(study)): Scale {
   const beforeTotals = billTotals(money.prepared, study.record);
-  return { study, money, beforeTotals, columns: meterColumns(study), views: new Map() };
+  return { study, money, beforeTotals, columns, views: new Map() };
 }
 
 /**

@@ -48,7 +48,7 @@ export function summarizeRequirement(
   months: MonthIndex,
   targetPowerFactor: number,
 ): RequirementSummary {
-  const ascending = Float64Array.from(needKvar).sort();
+  const ascending = needKvar.slice().sort();
   return {
     targetPowerFactor,
     maxKvar: ascending[ascending.length - 1]!,

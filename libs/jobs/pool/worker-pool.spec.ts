@@ -10,6 +10,7 @@ import { WorkerPool } from './worker-pool.js';
 
 const WORKER = `
 export const twice = ({ task }) => ({ value: task * 2 });
+export const sum = ({ task }) => ({ value: task.column.reduce((sum, value) => sum + value, 0) });
 export const refuse = () => ({ problems: [{ code: 'missing', path: 'a.b', expected: 'a', found: 'nothing' }] });
 export const fault = () => { throw new Error('ours'); };
 export const spin = () => { for (;;); };
@@ -33,6 +34,14 @@ describe('a pool of worker threads', () => {
 
   it('gives what the function gives', async () => {
     expect(await pool.run<number>('twice', 21)).toBe(42);
+  });
+
+  it('is handed a column over, and copies any other', async () => {
+    const column = Float64Array.of(1, 2, 3);
+    expect(await pool.run<number>('sum', { column })).toBe(6);
+    expect(column.length).toBe(3);
+    expect(await pool.run<number>('sum', { column }, { handedOver: [column, column, null] })).toBe(6);
+    expect(column.length).toBe(0);
   });
 
   it('throws an input problem as one, with its list', async () => {

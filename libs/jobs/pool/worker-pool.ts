@@ -10,6 +10,8 @@ export interface TaskOptions {
   signal?: AbortSignal;
   /** @param fraction share of the task that is done, 0 … 1 */
   report?: (fraction: number) => void;
+  /** columns of the task that are handed over and not copied: whoever asked has them no more */
+  handedOver?: readonly (ArrayBufferView | null)[];
 }
 
 /**
@@ -44,15 +46,16 @@ export class WorkerPool {
   /**
    * Runs an exported function in a thread.
    * @param name of the export
-   * @param task what it is given, copied
+   * @param task what it is given, copied but for what is handed over
    * @returns what it returns, copied
    * @throws InputProblem where it throws one, an AbortError where it was ended, else the fault
    */
-  async run<T>(name: string, task: unknown, { signal, report }: TaskOptions = {}): Promise<T> {
+  async run<T>(name: string, task: unknown, { signal, report, handedOver = [] }: TaskOptions = {}): Promise<T> {
     const { port1, port2 } = new MessageChannel();
     port1.on('message', (fraction: number) => report?.(fraction));
     try {
-      const options = { name, transferList: [port2], ...(signal === undefined ? {} : { signal }) };
+      const buffers = new Set(handedOver.flatMap((column) => (column === null ? [] : [column.buffer as ArrayBuffer])));
+      const options = { name, transferList: [port2, ...buffers], ...(signal === undefined ? {} : { signal }) };
       const answer = (await this.#pool.run({ task, port: port2 }, options)) as WorkerAnswer<T>;
       // The answer comes by another way and may have overtaken the last reports.
       for (let late = receiveMessageOnPort(port1); late !== undefined; late = receiveMessageOnPort(port1)) {
