@@ -44,6 +44,7 @@ export function App() {
       return (
         <div className="sheet">
           <Head />
+          <div className="sites-line" />
           <main className="bare">
             <h1>Nothing stands at this address</h1>
             <p>

@@ -35,7 +35,7 @@ export function MeterFileDrop() {
   const { answers } = reading.said;
   const used = keptMaps.find(({ name }) => name === reading.said.keptMap);
   return (
-    <section className="section" aria-labelledby="drop">
+    <section className="section no-print" aria-labelledby="drop">
       <h2 id="drop">{state.records.length === 0 ? 'The meter file' : 'Another meter file'}</h2>
       <FileChoices
         record={state.records[0]}

@@ -62,7 +62,7 @@ export function tracePicture(rows: readonly TraceRow[], title: string): string {
   const panes = (['kw', 'kvar'] as const).map((key, k) =>
     pane(rows, key, { top: 20 + k * (PANE + 30), unit: key === 'kw' ? 'kW' : 'kvar' }),
   );
-  return `<svg xmlns="http://www.w3.org/2000/svg" width="${WIDTH}" height="${2 * PANE + 70}" font-family="sans-serif" font-size="12" fill="#14202b"><title>${title}</title>${panes.join('')}</svg>`;
+  return `<svg xmlns="http://www.w3.org/2000/svg" width="${WIDTH}" height="${2 * PANE + 70}" font-family="sans-serif" font-size="12" fill="#14202b"><title>${title}</title><rect width="100%" height="100%" fill="#fbfcfa"/>${panes.join('')}</svg>`;
 }
 
 function pane(rows: readonly TraceRow[], key: 'kw' | 'kvar', { top, unit }: { top: number; unit: string }): string {

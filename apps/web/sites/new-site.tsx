@@ -47,7 +47,7 @@ export function NewSite() {
     }
   };
   return (
-    <section className="section" aria-labelledby="new-site">
+    <section className="section no-print" aria-labelledby="new-site">
       <h2 id="new-site">A new site</h2>
       <p className="caption">From the main switchboard’s nameplates; all else can wait.</p>
       <form

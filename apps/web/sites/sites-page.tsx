@@ -27,7 +27,7 @@ export function SitesPage() {
       <main className="sites">
         <div className="headline">
           <h1>{headline(sites?.filter(({ id }) => !gone.has(id)) ?? null)}</h1>
-          <div className="field">
+          <div className="field no-print">
             <label htmlFor="search">search</label>
             <span className="rule">
               <input id="search" type="search" value={search} onChange={({ target }) => setSearch(target.value)} />
