@@ -95,6 +95,7 @@ describe('the words of a path in another language', () => {
     expect(inLanguage(GERMAN, () => standingName('Q1 closed, transformer 2 out'))).toBe(
       'Q1 geschlossen, Transformator 2 außer Betrieb',
     );
+    expect(inLanguage(GERMAN, () => standingName('2 of C1'))).toBe('2 von C1');
     expect(standingName('Bank 2 with 1 + 3 stages in, 2 of C1')).toBe('Bank 2 with 1 + 3 stages in, 2 of C1');
   });
 });
