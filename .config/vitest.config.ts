@@ -1,6 +1,7 @@
 import { fileURLToPath } from 'node:url';
 import { defaultServerConditions } from 'vite';
 import { defineConfig } from 'vitest/config';
+import { BrowserFirst } from './browser-first.js';
 
 // 'import' or 'default' in these lists would reach Node itself and make it load the wrong build of some packages.
 const fromSource = resolved(['source', ...defaultServerConditions]);
@@ -42,6 +43,7 @@ export default defineConfig({
     pool: 'forks',
     // left to itself the runner keeps a core free
     maxWorkers: 2,
+    sequence: { sequencer: BrowserFirst },
     projects: [
       project(
         'unit',

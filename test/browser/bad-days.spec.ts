@@ -1,31 +1,28 @@
-import type { Browser, Page } from 'playwright-core';
+import type { Page } from 'playwright-core';
 import { afterAll, afterEach, beforeAll, beforeEach, describe, expect, it } from 'vitest';
 import { meterFile, siteFile } from '../api/site-builder.js';
-import { CHROMIUM, type OpenPage, openPage, startBrowser } from '../support/browser.js';
+import { CHROMIUM, type OpenPage, openPage } from '../support/browser.js';
 import { databases, type TestDatabase } from '../support/databases.js';
 import { startServer, type TestServer } from '../support/test-server.js';
 
 describe.runIf(CHROMIUM !== null)('on a bad day the page', () => {
-  let browser: Browser;
   let database: TestDatabase;
   let server: TestServer;
   let open: OpenPage;
   let siteId: string;
 
   beforeAll(async () => {
-    browser = await startBrowser();
     database = await databases[0]!.create();
     server = await startServer(database.url);
   });
   afterAll(async () => {
-    await browser.close();
     await server.close();
     await database.drop();
   });
   beforeEach(async () => {
     siteId = (await server.ask('POST', '/api/sites', siteFile())).body.id;
     await server.upload(siteId, meterFile());
-    open = await openPage(browser, server.base);
+    open = await openPage(server.base);
   });
   afterEach(async () => {
     expect(open.faults).toEqual([]);

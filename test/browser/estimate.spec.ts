@@ -1,31 +1,27 @@
-import type { Browser } from 'playwright-core';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { siteFile } from '../api/site-builder.js';
-import { CHROMIUM, openPage, startBrowser } from '../support/browser.js';
+import { CHROMIUM, openPage } from '../support/browser.js';
 import { databases, type TestDatabase } from '../support/databases.js';
 import { startServer, type TestServer } from '../support/test-server.js';
 
 const { create } = databases[0]!;
 
 describe.runIf(CHROMIUM !== null)('a site without a meter file', () => {
-  let browser: Browser;
   let database: TestDatabase;
   let server: TestServer;
 
   beforeAll(async () => {
-    browser = await startBrowser();
     database = await create();
     server = await startServer(database.url);
   });
   afterAll(async () => {
-    await browser.close();
     await server.close();
     await database.drop();
   });
 
   it('is estimated from bills typed at the record, refused at their fields until they hold, and called an estimate', async () => {
     const { id } = (await server.ask('POST', '/api/sites', siteFile({ bank: undefined }))).body;
-    const open = await openPage(browser, server.base);
+    const open = await openPage(server.base);
     const { page } = open;
     await page.goto(`${server.base}/#/sites/${id}/record`);
     await page.getByRole('button', { name: 'Add a bill' }).click();

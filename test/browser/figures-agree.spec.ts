@@ -3,11 +3,10 @@ import { mkdtempSync, rmSync, writeFileSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import { promisify } from 'node:util';
-import type { Browser } from 'playwright-core';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { formatNumber, GAP } from '#libs/present/format-number.js';
 import { meterFile, siteFile } from '../api/site-builder.js';
-import { CHROMIUM, openPage, startBrowser } from '../support/browser.js';
+import { CHROMIUM, openPage } from '../support/browser.js';
 import { databases, type TestDatabase } from '../support/databases.js';
 import { startServer, type TestServer } from '../support/test-server.js';
 
@@ -25,18 +24,15 @@ const SITES = [
 ];
 
 describe.runIf(CHROMIUM !== null)('a figure of a site', () => {
-  let browser: Browser;
   let database: TestDatabase;
   let server: TestServer;
   const folder = mkdtempSync(join(tmpdir(), 'varwright-agree-'));
 
   beforeAll(async () => {
-    browser = await startBrowser();
     database = await databases[0]!.create();
     server = await startServer(database.url);
   });
   afterAll(async () => {
-    await browser.close();
     await server.close();
     await database.drop();
     rmSync(folder, { recursive: true });
@@ -55,7 +51,7 @@ describe.runIf(CHROMIUM !== null)('a figure of a site', () => {
     const { result: api } = (await server.ask('POST', `/api/sites/${id}/assessments?wait=60`, {})).body;
     expect(api).toEqual(command);
 
-    const { page, close } = await openPage(browser, server.base);
+    const { page, close } = await openPage(server.base);
     const quantity = (value: number, unit: string) => `${formatNumber(value)}${unit === '' ? '' : GAP}${unit}`;
     const text = (selector: string) => page.locator(selector).allTextContents();
     await page.goto(`${server.base}/#/sites/${id}/need`);

@@ -1,10 +1,10 @@
 import { readFileSync } from 'node:fs';
 import { join } from 'node:path';
 import { gzipSync } from 'node:zlib';
-import type { Browser, Page } from 'playwright-core';
+import type { Page } from 'playwright-core';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { siteFile } from '../api/site-builder.js';
-import { CHROMIUM, openPage, startBrowser } from '../support/browser.js';
+import { CHROMIUM, openPage } from '../support/browser.js';
 import { databases, type TestDatabase } from '../support/databases.js';
 import { startServer, type TestServer } from '../support/test-server.js';
 import { openDemo } from './demo-page.js';
@@ -33,25 +33,22 @@ describe('the script the first page needs', () => {
 });
 
 describe.runIf(CHROMIUM !== null)('the page keeps pace', () => {
-  let browser: Browser;
   let database: TestDatabase;
   let server: TestServer;
   let siteId: string;
 
   beforeAll(async () => {
-    browser = await startBrowser();
     database = await databases[0]!.create();
     server = await startServer(database.url, { demo: true });
     siteId = await openDemo(server);
   });
   afterAll(async () => {
-    await browser.close();
     await server.close();
     await database.drop();
   });
 
   it('is usable in under two seconds, from an empty cache', async () => {
-    const { page, close } = await openPage(browser, server.base);
+    const { page, close } = await openPage(server.base);
     const from = performance.now();
     await page.goto(server.base);
     await page.getByRole('link', { name: /Merrowick/ }).waitFor();
@@ -62,7 +59,7 @@ describe.runIf(CHROMIUM !== null)('the page keeps pace', () => {
   });
 
   it('follows the hand: the figures stand within 100 ms of a step on a year of quarter hours (p95)', async () => {
-    const { page, close } = await openPage(browser, server.base, { width: 1440 });
+    const { page, close } = await openPage(server.base, { width: 1440 });
     await page.goto(`${server.base}/#/sites/${siteId}/bank`);
     await page.getByText('replayed').first().waitFor();
     await settled(page);
@@ -82,7 +79,7 @@ describe.runIf(CHROMIUM !== null)('the page keeps pace', () => {
   it('moves through a year of minutes at 50 frames a second or more', async () => {
     const { body: site } = await server.ask('POST', '/api/sites', siteFile({ name: 'Minute by minute' }));
     expect((await server.upload(site.id, yearOfMinutes())).status).toBe(201);
-    const { page, close } = await openPage(browser, server.base, { width: 1440 });
+    const { page, close } = await openPage(server.base, { width: 1440 });
     await page.goto(`${server.base}/#/sites/${site.id}/record`);
     const picture = page.getByRole('img', { name: /kW and kvar over time/ });
     await picture.waitFor({ timeout: 60_000 });

@@ -1,7 +1,7 @@
-import type { Browser, Locator, Page } from 'playwright-core';
-import { afterAll, afterEach, beforeAll, beforeEach, describe, expect, it } from 'vitest';
+import type { Locator, Page } from 'playwright-core';
+import { afterEach, beforeEach, describe, expect, it } from 'vitest';
 import { demoLoad } from '#apps/server/demo/demo-load.js';
-import { CHROMIUM, type OpenPage, openPage, startBrowser } from '../support/browser.js';
+import { CHROMIUM, type OpenPage, openPage } from '../support/browser.js';
 import { databases, type TestDatabase } from '../support/databases.js';
 import { startServer, type TestServer } from '../support/test-server.js';
 
@@ -9,20 +9,14 @@ const { create } = databases[0]!;
 const METER_FILE = { name: 'load.csv', mimeType: 'text/csv', buffer: Buffer.from([...demoLoad()].join('')) };
 
 describe.runIf(CHROMIUM !== null)('the whole job, from an empty database to a downloaded proposal', () => {
-  let browser: Browser;
   let database: TestDatabase;
   let server: TestServer;
   let open: OpenPage;
 
-  beforeAll(async () => {
-    browser = await startBrowser();
-  });
-  afterAll(() => browser.close());
-
   beforeEach(async () => {
     database = await create();
     server = await startServer(database.url);
-    open = await openPage(browser, server.base);
+    open = await openPage(server.base);
     await open.page.goto(server.base);
   });
   afterEach(async () => {

@@ -35,34 +35,19 @@ export interface PageLook {
   theme?: 'light' | 'dark';
 }
 
-/**
- * Starts the browser without any connection of its own.
- * @throws Error where it does not start
- */
-export function startBrowser(): Promise<Browser> {
-  return chromium.launch({
-    executablePath: CHROMIUM ?? '',
-    headless: true,
-    args: [
-      '--no-sandbox',
-      '--disable-gpu',
-      '--disable-quic',
-      '--no-first-run',
-      '--disable-background-networking',
-      '--disable-component-update',
-      '--disable-sync',
-      '--disable-dev-shm-usage',
-    ],
-  });
-}
+/** Started where a first page needs it; the pages of all test files of a process have it, and it ends with that process. */
+let browser: Promise<Browser> | undefined;
 
-/** Opens a page that blocks and records every request that leaves the server under test. */
+/**
+ * Opens a page that blocks and records every request that leaves the server under test.
+ * @throws Error where the browser does not start
+ */
 export async function openPage(
-  browser: Browser,
   base: string,
   { width = 1280, height = 900, theme = 'light' }: PageLook = {},
 ): Promise<OpenPage> {
-  const context = await browser.newContext({
+  browser ??= startBrowser();
+  const context = await (await browser).newContext({
     viewport: { width, height },
     colorScheme: theme,
     timezoneId: 'Europe/Berlin',
@@ -85,4 +70,22 @@ export async function openPage(
       faults.push(message.text());
   });
   return { page, context, outside, faults, close: () => context.close() };
+}
+
+/** The browser, without any connection of its own. */
+function startBrowser(): Promise<Browser> {
+  return chromium.launch({
+    executablePath: CHROMIUM ?? '',
+    headless: true,
+    args: [
+      '--no-sandbox',
+      '--disable-gpu',
+      '--disable-quic',
+      '--no-first-run',
+      '--disable-background-networking',
+      '--disable-component-update',
+      '--disable-sync',
+      '--disable-dev-shm-usage',
+    ],
+  });
 }
