@@ -38,7 +38,9 @@ export function TraceFigure({
     <ChartFigure
       figure={figure}
       steps={false}
-      picture={() => (trace === null ? '' : tracePicture(traceRows(trace, shown, MOST_STROKES), figure.finding, trace.zone))}
+      picture={() =>
+        trace === null ? '' : tracePicture(traceRows(trace, shown, MOST_STROKES), figure.finding, trace.zone)
+      }
     >
       <div ref={place} style={{ minHeight: HEIGHT }}>
         {trace === null || width === 0 ? null : (

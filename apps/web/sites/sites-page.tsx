@@ -127,7 +127,8 @@ function SiteRow({ site, onChange, onRemove }: { site: SiteListed; onChange: () 
       <div>
         {site.latest === null ? null : <VerdictWords verdict={site.latest.verdict} />}
         <p className="caption">
-          {site.latest === null ? '' : `revision ${site.latest.revision}, draft, `}changed {site.updatedAt.slice(0, 10)}
+          {site.latest === null ? '' : `revision ${site.latest.revision}, ${site.latest.stateText}, `}changed{' '}
+          {site.updatedAt.slice(0, 10)}
         </p>
       </div>
       <p className="row">
