@@ -1,18 +1,16 @@
-import { lazy, Suspense } from 'react';
 import { useAddress } from './address.js';
 import { Head } from './line/head.js';
+import { latePart, PartAwaited } from './line/late-part.js';
 import { SitePage } from './line/site-page.js';
 import { SitesPage } from './sites/sites-page.js';
 
-const SurveySheet = lazy(() =>
-  import('./record/survey-sheet.js').then(({ SurveySheet: sheet }) => ({ default: sheet })),
+const SurveySheet = latePart(() => import('./record/survey-sheet.js').then(({ SurveySheet: sheet }) => sheet));
+
+const ReevaluationPage = latePart(() =>
+  import('./reevaluation/reevaluation-page.js').then(({ ReevaluationPage: page }) => page),
 );
 
-const ReevaluationPage = lazy(() =>
-  import('./reevaluation/reevaluation-page.js').then(({ ReevaluationPage: page }) => ({ default: page })),
-);
-
-const PapersPage = lazy(() => import('./papers/papers-page.js').then(({ PapersPage: page }) => ({ default: page })));
+const PapersPage = latePart(() => import('./papers/papers-page.js').then(({ PapersPage: page }) => page));
 
 /** The page: the list of sites, one site, or a word that nothing is here. */
 export function App() {
@@ -22,23 +20,23 @@ export function App() {
       return <SitesPage />;
     case 'papers':
       return (
-        <Suspense>
+        <PartAwaited name="Shared papers">
           <PapersPage />
-        </Suspense>
+        </PartAwaited>
       );
     case 'site':
       return <SitePage key={address.siteId} address={address} />;
     case 'survey':
       return (
-        <Suspense>
+        <PartAwaited name="Site survey">
           <SurveySheet siteId={address.siteId} />
-        </Suspense>
+        </PartAwaited>
       );
     case 'reevaluation':
       return (
-        <Suspense>
+        <PartAwaited name="Judging the bank again">
           <ReevaluationPage key={address.siteId} siteId={address.siteId} asked={address.revision} />
-        </Suspense>
+        </PartAwaited>
       );
     case 'unknown':
       return (
