@@ -111,6 +111,20 @@ describe.runIf(CHROMIUM !== null)('on a bad day the page', () => {
       .toBe(before + 1);
   });
 
+  it('draws its figures as wide as the sheet before it prints, and as the window after', async () => {
+    const { page } = open;
+    await at(page, 'need');
+    const drawing = page.locator('.plot svg').first();
+    await drawing.waitFor();
+    const width = () => drawing.getAttribute('width').then(Number);
+    const before = await width();
+    await page.evaluate("dispatchEvent(new Event('beforeprint'))");
+    expect(await width()).toBe(700);
+    await page.evaluate("dispatchEvent(new Event('afterprint'))");
+    expect(await width()).toBe(before);
+    expect(before).not.toBe(700);
+  });
+
   it('gives a deleted site back, and deletes it once the way back has closed', async () => {
     const { page } = open;
     await page.goto(server.base);
