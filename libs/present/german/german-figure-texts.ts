@@ -14,7 +14,7 @@ export const GERMAN_FIGURE_TEXTS: Readonly<Record<string, string>> = {
   together: 'zusammen',
   bill: 'Rechnung',
   'Payback: {0}': 'Amortisation: {0}',
-  'Paid back after {0}': 'Amortisiert nach {0}',
+  'Paid back after {0}': 'Amortisationsdauer {0}',
   'Bars: net of each year, the capital at 0. Line: their sum, month by month, not discounted. Ring: paid back.':
     'Balken: Überschuss jedes Jahres, die Investition bei 0. Linie: deren Summe, Monat für Monat, nicht abgezinst. Ring: amortisiert.',
   '{0} are paid at the beginning; after {1} years the sum is {2}.':
