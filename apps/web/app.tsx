@@ -1,6 +1,5 @@
 import { useAddress } from './address.js';
-import { Head } from './line/head.js';
-import { latePart, PartAwaited } from './line/late-part.js';
+import { BarePage, latePart, PartAwaited } from './line/late-part.js';
 import { SitePage } from './line/site-page.js';
 import { SitesPage } from './sites/sites-page.js';
 
@@ -20,7 +19,7 @@ export function App() {
       return <SitesPage />;
     case 'papers':
       return (
-        <PartAwaited name="Shared papers">
+        <PartAwaited name="Shared papers" isPage>
           <PapersPage />
         </PartAwaited>
       );
@@ -28,28 +27,24 @@ export function App() {
       return <SitePage key={address.siteId} address={address} />;
     case 'survey':
       return (
-        <PartAwaited name="Site survey">
+        <PartAwaited name="A sheet for the visit" isPage>
           <SurveySheet siteId={address.siteId} />
         </PartAwaited>
       );
     case 'reevaluation':
       return (
-        <PartAwaited name="Judging the bank again">
+        <PartAwaited name="Judging the bank again" isPage>
           <ReevaluationPage key={address.siteId} siteId={address.siteId} asked={address.revision} />
         </PartAwaited>
       );
     case 'unknown':
       return (
-        <div className="sheet">
-          <Head />
-          <div className="sites-line" />
-          <main className="bare">
-            <h1>Nothing stands at this address</h1>
-            <p>
-              “{address.asked}” leads nowhere. <a href="#/">All sites</a> is the way on.
-            </p>
-          </main>
-        </div>
+        <BarePage>
+          <h1>Nothing stands at this address</h1>
+          <p>
+            “{address.asked}” leads nowhere. <a href="#/">All sites</a> is the way on.
+          </p>
+        </BarePage>
       );
   }
 }

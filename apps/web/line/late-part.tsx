@@ -1,4 +1,5 @@
 import { type ComponentType, lazy, type ReactNode, Suspense, useEffect, useState } from 'react';
+import { Head } from './head.js';
 
 /** A script that did not come is asked for again after a while [ms]. */
 const AGAIN_MS = 2000;
@@ -14,8 +15,29 @@ export function latePart<Props>(load: () => Promise<ComponentType<Props>>) {
 }
 
 /** Stands where a late part will be; without a connection it says so. */
-export function PartAwaited({ name, children }: { name: string; children: ReactNode }) {
-  return <Suspense fallback={<Awaited name={name} />}>{children}</Suspense>;
+export function PartAwaited({
+  name,
+  isPage = false,
+  children,
+}: {
+  name: string;
+  /** the part is the whole page, its head included */
+  isPage?: boolean;
+  children: ReactNode;
+}) {
+  const awaited = <Awaited name={name} />;
+  return <Suspense fallback={isPage ? <BarePage>{awaited}</BarePage> : awaited}>{children}</Suspense>;
+}
+
+/** A page that holds a few words alone, headed as every page is. */
+export function BarePage({ children }: { children: ReactNode }) {
+  return (
+    <div className="sheet">
+      <Head />
+      <div className="sites-line" />
+      <main className="bare">{children}</main>
+    </div>
+  );
 }
 
 function Awaited({ name }: { name: string }) {
