@@ -1,18 +1,15 @@
-import { lazy, Suspense } from 'react';
 import { useAddress } from './address.js';
-import { Head } from './line/head.js';
+import { BarePage, latePart, PartAwaited } from './line/late-part.js';
 import { SitePage } from './line/site-page.js';
 import { SitesPage } from './sites/sites-page.js';
 
-const SurveySheet = lazy(() =>
-  import('./record/survey-sheet.js').then(({ SurveySheet: sheet }) => ({ default: sheet })),
+const SurveySheet = latePart(() => import('./record/survey-sheet.js').then(({ SurveySheet: sheet }) => sheet));
+
+const ReevaluationPage = latePart(() =>
+  import('./reevaluation/reevaluation-page.js').then(({ ReevaluationPage: page }) => page),
 );
 
-const ReevaluationPage = lazy(() =>
-  import('./reevaluation/reevaluation-page.js').then(({ ReevaluationPage: page }) => ({ default: page })),
-);
-
-const PapersPage = lazy(() => import('./papers/papers-page.js').then(({ PapersPage: page }) => ({ default: page })));
+const PapersPage = latePart(() => import('./papers/papers-page.js').then(({ PapersPage: page }) => page));
 
 /** The page: the list of sites, one site, or a word that nothing is here. */
 export function App() {
@@ -22,35 +19,32 @@ export function App() {
       return <SitesPage />;
     case 'papers':
       return (
-        <Suspense>
+        <PartAwaited name="Shared papers" isPage>
           <PapersPage />
-        </Suspense>
+        </PartAwaited>
       );
     case 'site':
       return <SitePage key={address.siteId} address={address} />;
     case 'survey':
       return (
-        <Suspense>
+        <PartAwaited name="A sheet for the visit" isPage>
           <SurveySheet siteId={address.siteId} />
-        </Suspense>
+        </PartAwaited>
       );
     case 'reevaluation':
       return (
-        <Suspense>
+        <PartAwaited name="Judging the bank again" isPage>
           <ReevaluationPage key={address.siteId} siteId={address.siteId} asked={address.revision} />
-        </Suspense>
+        </PartAwaited>
       );
     case 'unknown':
       return (
-        <div className="sheet">
-          <Head />
-          <main className="bare">
-            <h1>Nothing stands at this address</h1>
-            <p>
-              “{address.asked}” leads nowhere. <a href="#/">All sites</a> is the way on.
-            </p>
-          </main>
-        </div>
+        <BarePage>
+          <h1>Nothing stands at this address</h1>
+          <p>
+            “{address.asked}” leads nowhere. <a href="#/">All sites</a> is the way on.
+          </p>
+        </BarePage>
       );
   }
 }

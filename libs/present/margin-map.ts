@@ -1,6 +1,6 @@
 import type { MarginMap } from '#libs/engine/index.js';
 import type { CellFill, Chart, Mark } from './chart.js';
-import { formatNumber, formatShare } from './format-number.js';
+import { formatNumber, formatQuantity, formatShare } from './format-number.js';
 import { say } from './language.js';
 
 /** Shares of the limit at which a cell's fill changes [%]; over a limit only beyond rounding. */
@@ -36,7 +36,7 @@ export function marginMap(
         ? say`${name}: every level within its limits`
         : say`${name}: ${over} of ${all.length - 1} levels over a limit`,
     caption: say`Harmonic voltage, % of its limit, worst corner; rows are levels in kvar, columns orders.${left}`,
-    sentence: say`Harmonic voltage as a share of its limit for ${levels.length} levels and ${heads.length} orders; the table holds every number.`,
+    sentence: sentenceOf(levels, margins.ordersH),
     x: { ...axis, to: heads.length, ticks: heads.map((text, at) => ({ at: at + 0.5, text })) },
     y: { ...axis, unit: 'kvar', to: rows.length, ticks: rows.map((row, at) => ({ at: at + 0.5, text: row[0]! })) },
     equalScales: false,
@@ -49,6 +49,15 @@ export function marginMap(
 interface LevelShares {
   kvar: number;
   shares: number[];
+}
+
+function sentenceOf(levels: readonly LevelShares[], orders: readonly number[]): string {
+  const cells = levels.flatMap(({ kvar, shares }) => shares.map((share, at) => ({ kvar, share, order: orders[at]! })));
+  const [first, ...others] = cells;
+  if (first === undefined) return say`No order is present.`;
+  const worst = others.reduce((most, one) => (one.share > most.share ? one : most), first);
+  const order = formatNumber(worst.order, 'given');
+  return say`Harmonic voltage as a share of its limit for ${levels.length} levels and ${orders.length} orders: at the most ${formatShare(worst.share)} %, order ${order} with ${formatQuantity(worst.kvar, 'kvar')} connected.`;
 }
 
 function nearestLimits(all: LevelShares[], most: number): LevelShares[] {

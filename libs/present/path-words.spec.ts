@@ -4,7 +4,7 @@ import * as z from 'zod';
 import { siteSchema } from '#libs/contract/site-schema.js';
 import { GERMAN } from './german/german.js';
 import { type Catalogue, inLanguage } from './language.js';
-import { codeWords, keyWords, partWords, pathWords } from './path-words.js';
+import { codeWords, expectedWords, keyWords, partWords, pathWords } from './path-words.js';
 import { standingName } from './standing-name.js';
 
 describe('the words of a path', () => {
@@ -82,6 +82,15 @@ describe('the words of a path in another language', () => {
     expect(unsaid(said, GERMAN).filter((one) => !/^(#( \((W\/)?kvarh?\))?|kvarh?)( \d+)?$/.test(one))).toEqual([]);
   });
 
+  it('stand in what a refusal asks for, where it names another field', () => {
+    expect(expectedWords('at most supply.faultLevelMva.max, 250')).toBe(
+      'at most 250, the “supply, fault level (MVA), greatest”',
+    );
+    expect(expectedWords('a bank, in bank.stages[1].count or none')).toBe('a bank, in “bank, group 2, count” or none');
+    for (const plain of ['a time zone such as "Europe/Dublin" or "+10:00"', 'at most 2.5 MVA', 'one of "a.b", "c"'])
+      expect(expectedWords(plain)).toBe(plain);
+  });
+
   it('are found wanting where one is missing (control)', () => {
     const { ventilation: _, ...fields } = GERMAN.fields;
     expect(unsaid(said, { ...GERMAN, fields })).toContain('ventilation');
@@ -95,6 +104,7 @@ describe('the words of a path in another language', () => {
     expect(inLanguage(GERMAN, () => standingName('Q1 closed, transformer 2 out'))).toBe(
       'Q1 geschlossen, Transformator 2 außer Betrieb',
     );
+    expect(inLanguage(GERMAN, () => standingName('2 of C1'))).toBe('2 von C1');
     expect(standingName('Bank 2 with 1 + 3 stages in, 2 of C1')).toBe('Bank 2 with 1 + 3 stages in, 2 of C1');
   });
 });

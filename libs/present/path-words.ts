@@ -77,6 +77,20 @@ export function pathWords(path: string): string {
   return path.split('.').map(stepWords).join(', ');
 }
 
+/** A field's path within a sentence, and the value it has where the sentence goes on with that. */
+const NAMED_FIELD = /(?<!["\w./])([a-z]\w*(?:\[\d+\])?(?:\.[a-z]\w*(?:\[\d+\])?)+)(?:, (\d[\d\u00a0.]*))?(?!["\w/])/g;
+
+/**
+ * What a refusal asks for, with the fields it names in words.
+ * @param expected "at most supply.faultLevelMva.max, 250"
+ * @returns "at most 250, the “supply, fault level (MVA), greatest”"
+ */
+export function expectedWords(expected: string): string {
+  return expected.replace(NAMED_FIELD, (_, path: string, value?: string) =>
+    value === undefined ? `“${pathWords(path)}”` : `${value}, the “${pathWords(path)}”`,
+  );
+}
+
 function stepWords(step: string): string {
   const key = step.replace(/\[.*$/, '');
   const places = [...step.matchAll(/\[(\d+)\]/g)].map(([, at]) => ` ${Number(at) + 1}`).join('');

@@ -1,5 +1,5 @@
 import type { Chart } from './chart.js';
-import { formatNumber, formatQuantity } from './format-number.js';
+import { formatFixed, formatNumber, formatQuantity } from './format-number.js';
 import { linearAxis } from './ticks.js';
 
 /** Needed kvar at a row of targets, columns of equal length. */
@@ -50,7 +50,7 @@ export function targetCurve(sweep: TargetSweep, at: TargetNeed): Chart {
       to,
       ticks: powerFactors
         .filter((factor) => Math.abs(factor * 20 - Math.round(factor * 20)) < 1e-6)
-        .map((factor) => ({ at: factor, text: factor.toFixed(2) })),
+        .map((factor) => ({ at: factor, text: formatFixed(factor, 2) })),
     },
     y: linearAxis('needed', 'kvar', { least: 0, most: maxKvar.at(-1)! }, 4),
     equalScales: false,

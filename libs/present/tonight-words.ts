@@ -85,8 +85,10 @@ function entryWords(entry: MeasuredEntry, out: number, stages: readonly Measured
   const whole = ofGroup.reduce((sum, one) => sum + one.count, 0);
   const numbers = Array.from({ length: whole }, (_, k) => k + 1).filter((number) => !measured.includes(number));
   if (count === 1) return say`stage ${numbers[0]!} of group ${group + 1} (${size})`;
-  const named = say`stages ${listed(numbers.map(String))} of group ${group + 1} (${size} each)`;
-  return out === count ? named : say`${countWord(out)} of ${named}`;
+  const list = listed(numbers.map(String));
+  return out === count
+    ? say`stages ${list} of group ${group + 1} (${size} each)`
+    : say`${countWord(out)} of stages ${list} of group ${group + 1} (${size} each)`;
 }
 
 function toMendWords({ kind, name, group }: ToMend): string {

@@ -1,37 +1,64 @@
 import type { ReactorTrial } from '#libs/engine/index.js';
 import { engineName } from './engine-name.js';
 import { formatNumber, formatQuantity, formatRange } from './format-number.js';
-import { say, words } from './language.js';
+import { say } from './language.js';
 import { verdictWords } from './verdict-words.js';
 
-/** Names of the columns of `trialRows`. */
-export const TRIAL_HEADS = words([
-  'reactors, rating',
-  'tuned',
-  'peaks, order',
-  'all stages',
-  'current of a stage',
-  'ripple left',
-  'verdict',
-  'why',
-] as const);
+/** One column of the table, with the room it takes beside the others. */
+interface TrialColumn {
+  head: string;
+  share: number;
+  cell: (trial: ReactorTrial) => string;
+}
+
+/** The same stages at each reactor ratio, and why each is or is not the bank's. */
+export interface TrialTable {
+  columns: Pick<TrialColumn, 'head' | 'share'>[];
+  /** a row of cells a ratio */
+  rows: string[][];
+}
 
 /**
- * The same stages at each reactor ratio, and why each is or is not the bank's.
+ * Every ratio that was tried, as a table; what it costs and what it leaves of a ripple signal where these are known.
  * @param trials rows of a result
- * @returns a row of eight cells a ratio
+ * @param currency of the prices, '' where it is not named
  */
-export function trialRows(trials: readonly ReactorTrial[]): string[][] {
-  return trials.map((trial) => [
-    trialName(trial),
-    trial.tunedOrderH === null ? '–' : formatNumber(trial.tunedOrderH),
-    peakWords(trial),
-    formatQuantity(trial.effectiveKvar, 'kvar'),
-    currentWords(trial),
-    trial.rippleShare === null ? '–' : formatQuantity(100 * trial.rippleShare, '%'),
-    verdictWords(trial.verdict),
-    trialReason(trial),
-  ]);
+export function trialTable(trials: readonly ReactorTrial[], currency: string): TrialTable {
+  const columns: TrialColumn[] = [
+    { head: say`reactors, rating`, share: 20, cell: trialName },
+    {
+      head: say`tuned`,
+      share: 9,
+      cell: ({ tunedOrderH }) => (tunedOrderH === null ? '–' : formatNumber(tunedOrderH)),
+    },
+    { head: say`peaks, order`, share: 14, cell: peakWords },
+    { head: say`all stages`, share: 12, cell: ({ effectiveKvar }) => formatQuantity(effectiveKvar, 'kvar') },
+    { head: say`current of a stage`, share: 15, cell: currentWords },
+  ];
+  if (trials.some(({ rippleShare }) => rippleShare !== null))
+    columns.push({ head: say`ripple left`, share: 9, cell: rippleWords });
+  if (trials.some((trial) => capitalIn(trial) !== null))
+    columns.push({ head: currency === '' ? say`costs new` : say`costs new, ${currency}`, share: 11, cell: costWords });
+  columns.push({ head: say`verdict`, share: 15, cell: ({ verdict }) => verdictWords(verdict) });
+  columns.push({ head: say`why`, share: 31, cell: trialReason });
+  return { columns, rows: trials.map((trial) => columns.map(({ cell }) => cell(trial))) };
+}
+
+/**
+ * What the bank of a row costs new.
+ * @returns null where the prices do not say; a result that an earlier engine gave has none in its rows
+ */
+export function capitalIn({ capital }: Partial<ReactorTrial>): number | null {
+  return capital ?? null;
+}
+
+function costWords(trial: ReactorTrial): string {
+  const capital = capitalIn(trial);
+  return capital === null ? '–' : formatNumber(capital, 'whole');
+}
+
+function rippleWords({ rippleShare }: ReactorTrial): string {
+  return rippleShare === null ? '–' : formatQuantity(100 * rippleShare, '%');
 }
 
 /**

@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { UTC_TABLE } from '#libs/engine/index.js';
+import { UTC_TABLE, type ZoneTable } from '#libs/engine/index.js';
 import { BEYOND_CELL, GAP_CELL, type YearMapParts, yearMap } from './year-map.js';
 
 const FIRST_S = Date.UTC(2025, 0, 30) / 1000;
@@ -34,6 +34,17 @@ describe('the year by day and hour', () => {
     expect(map.days).toBe(3);
     expect(map.cells).toHaveLength(72);
     expect([...map.cells].flatMap((cell, at) => (cell === GAP_CELL ? [at] : []))).toEqual([24 + 4]);
+  });
+
+  it('counts no hour that the clock leaves out, nor one outside the record, as without a reading', () => {
+    // At 02:00 of the second day the clock is put on by an hour; the record begins and ends at noon.
+    const zone: ZoneTable = { zone: 'x', fromS: [0, FIRST_S + 86_400 + 2 * 3600], offsetS: [0, 3600] };
+    const beginS = Float64Array.from({ length: 2 * 96 }, (_, i) => FIRST_S + 43_200 + i * 900);
+    const put = yearMap(parts({ zone, beginS, values: beginS.map(() => 5) }));
+    expect(put.finding).toBe('0');
+    expect(put.cells[24 + 2]).toBe(put.cells[24 + 1]);
+    const without = yearMap(parts({ beginS: beginS.filter((_, i) => i < 4 || i > 7), values: beginS.slice(4) }));
+    expect(Number(without.finding)).toBeCloseTo(100 / 48, 9);
   });
 
   it('shows the greatest value of each hour: 235 in the last, since one quarter hour of each has 5 more', () => {

@@ -66,20 +66,46 @@ export function yearMap(parts: YearMapParts): YearMap {
     const at = (day - firstDay) * 24 + Math.floor((localS - day * DAY_S) / 3600);
     if (!(greatest[at]! >= values[i]!)) greatest[at] = values[i]!;
   }
+  const stands = hoursOfRecord(parts, { firstDay, days });
+  // An hour that the clock leaves out is none without a reading.
+  const [begin, end] = [stands.indexOf(1), stands.lastIndexOf(1)];
+  for (let at = begin + 1; at < end; at++) if (stands[at] === 0) greatest[at] = greatest[at - 1]!;
   const most = greatest.reduce((top, value) => (Number.isNaN(value) ? top : Math.max(top, value)), 0);
   const bounds = boundsOf(parts.beyond === null || parts.beyond <= 0 ? most : Math.min(most, parts.beyond));
-  const counts = { gaps: 0, beyond: 0 };
-  const cells = Uint8Array.from(greatest, (value) => cellOf(value, bounds, { beyond: parts.beyond, counts }));
+  const cells = Uint8Array.from(greatest, (value) => cellOf(value, bounds, parts.beyond));
   const { id, measure, unit, caption, beyond, table } = parts;
-  const facts = { most, gapPct: (100 * counts.gaps) / cells.length, beyondHours: counts.beyond };
+  const hours = countOf(stands, () => true);
+  const facts = {
+    most,
+    gapPct: (100 * countOf(stands, (at) => cells[at] === GAP_CELL)) / hours,
+    beyondHours: countOf(stands, (at) => cells[at] === BEYOND_CELL),
+  };
   return {
     ...{ id, measure, unit, caption, beyond, table, days, cells, bounds },
     finding: parts.finding(facts),
     sentence:
       `${measure} by day and hour over ${days} days: at the most ${formatQuantity(most, unit)}; ` +
-      `${formatQuantity(facts.gapPct, '%')} of the hours hold no reading.`,
+      `${facts.gapPct === 0 ? 'no hour is' : `${formatQuantity(facts.gapPct, '%')} of the hours are`} without a reading.`,
     months: monthsOf(firstDay, days),
   };
+}
+
+/** 1 for each cell whose hour the record reaches and the clock has. */
+function hoursOfRecord(
+  { beginS, zone }: YearMapParts,
+  { firstDay, days }: { firstDay: number; days: number },
+): Uint8Array {
+  const stands = new Uint8Array(days * 24);
+  // Half hours reach every hour of a clock that is moved by half an hour.
+  for (let s = beginS[0]!; s <= beginS.at(-1)!; s += 1800) {
+    const localS = s + offsetAtS(zone, s);
+    stands[Math.floor(localS / 3600) - firstDay * 24] = 1;
+  }
+  return stands;
+}
+
+function countOf(stands: Uint8Array, counts: (at: number) => boolean): number {
+  return stands.reduce((sum, stood, at) => (stood === 1 && counts(at) ? sum + 1 : sum), 0);
 }
 
 function boundsOf(most: number): number[] {
@@ -91,19 +117,9 @@ function boundsOf(most: number): number[] {
   return [...bounds, most];
 }
 
-function cellOf(
-  value: number,
-  bounds: readonly number[],
-  { beyond, counts }: { beyond: number | null; counts: { gaps: number; beyond: number } },
-): number {
-  if (Number.isNaN(value)) {
-    counts.gaps++;
-    return GAP_CELL;
-  }
-  if (beyond !== null && value > beyond * (1 + 1e-12)) {
-    counts.beyond++;
-    return BEYOND_CELL;
-  }
+function cellOf(value: number, bounds: readonly number[], beyond: number | null): number {
+  if (Number.isNaN(value)) return GAP_CELL;
+  if (beyond !== null && value > beyond * (1 + 1e-12)) return BEYOND_CELL;
   const step = bounds.findLastIndex((bound) => value >= bound);
   return Math.max(0, Math.min(step, bounds.length - 2));
 }

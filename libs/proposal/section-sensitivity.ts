@@ -4,14 +4,14 @@ import { FIRMNESS_HEADS, firmnessFinding, firmnessRows } from '#libs/present/fir
 import { lowered } from '#libs/present/first-letter.js';
 import { formatQuantity } from '#libs/present/format-number.js';
 import { say } from '#libs/present/language.js';
-import { TRIAL_HEADS, trialRows } from '#libs/present/trial-rows.js';
+import { trialTable } from '#libs/present/trial-rows.js';
 import { verdictWords } from '#libs/present/verdict-words.js';
 import { NOTE, type Paper } from './paper.js';
 import { drawTable } from './table.js';
 import { BODY } from './typesetter.js';
 
 /** How far the verdict stands when an input is another one, and what a lost stage changes. */
-export function drawSensitivity(paper: Paper, { result }: BankOutcome): void {
+export function drawSensitivity(paper: Paper, { result, site }: BankOutcome): void {
   const { robustness } = result;
   if (robustness === null) {
     paper.heading('10', say`Sensitivity: not computed`);
@@ -31,7 +31,7 @@ export function drawSensitivity(paper: Paper, { result }: BankOutcome): void {
     });
   }
   drawStagesOut(paper, robustness.stageOut);
-  drawTrials(paper, result.reactorTrials);
+  drawTrials(paper, result.reactorTrials, site.papers.currency);
 }
 
 function drawStagesOut(paper: Paper, stageOut: readonly StageOut[]): void {
@@ -45,13 +45,11 @@ function drawStagesOut(paper: Paper, stageOut: readonly StageOut[]): void {
   drawTable(paper, columns, stageOut.map(stageRow), { after: 5 });
 }
 
-const TRIAL_SHARES = [20, 9, 14, 12, 15, 9, 15, 31] as const;
-
-function drawTrials(paper: Paper, trials: readonly ReactorTrial[]): void {
+function drawTrials(paper: Paper, trials: readonly ReactorTrial[], currency: string): void {
   if (trials.length === 0) return;
   paper.heading('10.1', say`Reactor ratios tried with the same stages`, { level: 3 });
-  const columns = TRIAL_HEADS.map((head, at) => ({ head, share: TRIAL_SHARES[at]! }));
-  drawTable(paper, columns, trialRows(trials), { style: { ...BODY, size: 8.6 }, after: 5 });
+  const { columns, rows } = trialTable(trials, currency);
+  drawTable(paper, columns, rows, { style: { ...BODY, size: 8.6 }, after: 5 });
   const note = say`A filter is tuned a little below the order of the greatest current, to take it up; its stage carries that current.`;
   paper.paragraph([note], { style: NOTE });
 }

@@ -1,23 +1,32 @@
 import type { EntityManager } from 'typeorm';
+import type { ReviewState } from '#libs/review/review.js';
 import { ProposalFile } from './proposal-file.js';
 import { ReviewStanding } from './review-standing.js';
 import { Revision } from './revision.js';
 import { StoredSite } from './stored-site.js';
 
 /** What a list of sites shows of each one's latest revision. */
-export type RevisionMark = Pick<Revision, 'siteId' | 'revision' | 'kind' | 'verdict' | 'createdAt' | 'proposed'>;
+export type RevisionMark = Pick<Revision, 'siteId' | 'revision' | 'kind' | 'verdict' | 'createdAt' | 'proposed'> & {
+  /** where its review stands */
+  state: ReviewState;
+};
 
 /** The latest revision of every site of an organisation that has one. */
 export async function latestRevisions(manager: EntityManager, organisationId: string): Promise<RevisionMark[]> {
   const rows = await manager
     .createQueryBuilder(Revision, 'revision')
     .innerJoin(StoredSite, 'site', 'site.id = revision.siteId AND site.lastRevision = revision.revision')
+    .leftJoinAndMapOne('revision.standing', ReviewStanding, 'standing', 'standing.revisionId = revision.id')
     .select(['siteId', 'revision', 'kind', 'verdict', 'createdAt', 'proposed', 'id'].map((name) => `revision.${name}`))
+    .addSelect('standing')
     .where('site.organisationId = :organisationId', { organisationId })
     .getMany();
-  return rows.map(({ siteId, revision, kind, verdict, createdAt, proposed }) => ({
-    ...{ siteId, revision, kind, verdict, createdAt, proposed },
-  }));
+  return (rows as (Revision & { standing?: ReviewStanding | null })[]).map(
+    ({ siteId, revision, kind, verdict, createdAt, proposed, standing }) => ({
+      ...{ siteId, revision, kind, verdict, createdAt, proposed },
+      state: standing?.state ?? 'draft',
+    }),
+  );
 }
 
 /** A revision that has not got its number yet, and the proposal made for that number. */

@@ -36,6 +36,8 @@ for (const { name, available, create } of usualDatabases) {
       });
       return (await sent.json()) as { standing: string; signedAfterwards: boolean; text: string };
     };
+    const listed = async () =>
+      (await server.ask('GET', '/api/sites')).body.sites.find(({ id }: { id: string }) => id === siteId);
     const plan = () =>
       server.ask('POST', `/api/sites/${siteId}/plans?wait=60`, { author: 'R. Aldane', reason: 'first' });
     const paperOf = async (revision: number) => (await server.ask('GET', at(revision, '/approved.pdf'))).body as Buffer;
@@ -71,6 +73,7 @@ for (const { name, available, create } of usualDatabases) {
       const draft = (await server.ask('GET', at(1, '/proposal.pdf'))).body;
       expect(await verify(draft)).toMatchObject({ standing: 'draft' });
       expect((await server.ask('GET', at(1, '/approved.pdf'))).status).toBe(404);
+      expect((await listed()).latest).toMatchObject({ revision: 1, state: 'draft', stateText: 'draft, not reviewed' });
     });
 
     it('wants the version in If-Match, and refuses another with both', async () => {
@@ -112,6 +115,7 @@ for (const { name, available, create } of usualDatabases) {
       await act(1, 'comments', { figure: figures[0].id, text: 'the record has one day more than I used' });
       const approved = await act(1, 'approve', SIGNED);
       expect([approved.status, approved.body.state, approved.body.approval?.isOwn]).toEqual([200, 'approved', true]);
+      expect((await listed()).latest).toMatchObject({ revision: 1, state: 'approved', stateText: 'approved' });
       const paper = await paperOf(1);
       expect(createHash('sha256').update(paper).digest('hex')).toBe(approved.body.approval.paper.sha256);
       expect(await verify(paper)).toMatchObject({ standing: 'approved', signedAfterwards: false });

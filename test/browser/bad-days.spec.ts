@@ -52,7 +52,12 @@ describe.runIf(CHROMIUM !== null)('on a bad day the page', () => {
     await page.getByRole('button', { name: 'Compute and keep' }).click();
     await page.getByText(/Not saved: no connection since \d\d:\d\d/).waitFor();
     expect(await page.getByLabel('fault level, least').inputValue()).toBe('95');
+    // A station whose script is not here yet comes by itself once it can.
+    await page.locator('.station a').filter({ hasText: 'Need' }).click();
+    await page.getByText(/Not saved: no connection since \d\d:\d\d/).waitFor();
     await context.setOffline(false);
+    await page.getByLabel('target power factor').first().waitFor();
+    await page.locator('.station a').filter({ hasText: 'Supply' }).click();
     await page.reload();
     await page.getByLabel('fault level, least').waitFor();
     expect(await page.getByLabel('fault level, least').inputValue()).toBe('95');
@@ -104,6 +109,20 @@ describe.runIf(CHROMIUM !== null)('on a bad day the page', () => {
     await expect
       .poll(async () => (await server.ask('GET', `/api/sites/${siteId}/records`)).body.records.length)
       .toBe(before + 1);
+  });
+
+  it('draws its figures as wide as the sheet before it prints, and as the window after', async () => {
+    const { page } = open;
+    await at(page, 'need');
+    const drawing = page.locator('.plot svg').first();
+    await drawing.waitFor();
+    const width = () => drawing.getAttribute('width').then(Number);
+    const before = await width();
+    await page.evaluate("dispatchEvent(new Event('beforeprint'))");
+    expect(await width()).toBe(700);
+    await page.evaluate("dispatchEvent(new Event('afterprint'))");
+    expect(await width()).toBe(before);
+    expect(before).not.toBe(700);
   });
 
   it('gives a deleted site back, and deletes it once the way back has closed', async () => {

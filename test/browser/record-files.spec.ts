@@ -75,6 +75,19 @@ describe.runIf(CHROMIUM !== null)('the meter files of a record, on the page', ()
     expect(first.record.maxKw).toBe(100);
   });
 
+  it('that hold an hour the clock leaves out are read by the clock that is chosen', async () => {
+    const { page } = open;
+    await file(page).setInputFiles(bareFile(80, 100, () => 100));
+    await page.getByText(/in the hour that was skipped/).waitFor();
+    await page.getByRole('button', { name: 'UTC', exact: true }).click();
+    await page.getByRole('button', { name: 'power in kW and kvar' }).click();
+    await page.getByRole('heading', { name: /20 days of readings/ }).waitFor();
+    const [{ record }] = await records();
+    expect([record.intervals, record.missing, record.beginS]).toEqual([20 * 96, 0, Date.UTC(2025, 2, 22) / 1000]);
+    // Its drawing stands without the page being loaded anew.
+    await page.getByLabel(/^The record's kW and kvar over time/).waitFor();
+  });
+
   it('are read with kept answers where they are chosen before', async () => {
     const { page } = open;
     await server.ask('POST', '/api/kept-maps', { name: 'In watts', map: { units: { active: 'W', reactive: 'var' } } });

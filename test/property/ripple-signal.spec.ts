@@ -11,7 +11,7 @@ import {
   UTC_TABLE,
   withRobustness,
 } from '#libs/engine/index.js';
-import { trialReason, trialRows } from '#libs/present/trial-rows.js';
+import { type TrialTable, trialReason, trialTable } from '#libs/present/trial-rows.js';
 import { assessedSite, BANK, LOADS, RECORD, reasonCodes } from '../support/assessed-site.js';
 import { Complex } from '../support/complex.js';
 import { madeSite } from '../support/made-site.js';
@@ -122,9 +122,19 @@ describe('the table of reactor ratios', () => {
   });
 
   it('is a row of words a ratio', () => {
-    const rows = trialRows(trials);
+    const { rows } = trialTable(trials, '');
     expect(rows).toHaveLength(trials.length);
     expect(rows.flat().filter((cell) => cell === '' || /NaN|undefined|null/.test(cell))).toEqual([]);
+  });
+
+  it('tells cost and ripple signal where one row has them, and no column of dashes where none has', () => {
+    const [first, ...others] = trials.map((trial) => ({ ...trial, capital: null, rippleShare: null }));
+    const heads = (table: TrialTable) => table.columns.map(({ head }) => head);
+    const bare = heads(trialTable([first!, ...others], 'EUR'));
+    const full = trialTable([{ ...first!, capital: 12_345.6, rippleShare: 0.5 }, ...others], 'EUR');
+    expect(heads(full).filter((head) => !bare.includes(head))).toEqual(['ripple left', 'costs new, EUR']);
+    expect(full.rows[0]!.join(' ').replaceAll('\u00a0', ' ')).toMatch(/ 50\.0 % 12 346 /);
+    expect(full.rows[1]!.slice(5, 7)).toEqual(['–', '–']);
   });
 
   it('is not made where a group has a ratio of its own', () => {

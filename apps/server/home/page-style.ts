@@ -93,6 +93,7 @@ li { overflow-wrap: anywhere; }
 .scroll { overflow-x: auto; }
 .scroll:focus-visible { outline: 3px solid var(--ink); outline-offset: 3px; }
 .figures td { white-space: nowrap; overflow-wrap: normal; }
+.figures td, .figures thead th + th { text-align: right; padding-left: 10px; }
 footer { padding-bottom: 32px; }
 details { margin: 12px 0; }
 code { overflow-wrap: anywhere; }

@@ -16,7 +16,7 @@ export function formPage(title: string, body: Html | Html[]): string {
 <link rel="stylesheet" href="/page.css">
 </head>
 <body>
-<header><p><a href="/"><strong>Varwright</strong></a></p><div class="line"></div></header>
+<header><p><strong><a href="/">Varwright</a></strong> <span class="soft">plans capacitor banks for power-factor correction</span></p><div class="line"></div></header>
 <main>
 <h1>${title}</h1>
 ${body}

@@ -3,6 +3,7 @@ import { Body, Controller, Delete, Get, Headers, HttpCode, Param, Post, Put, Res
 import type { FastifyReply } from 'fastify';
 import { readSiteWithMathjs } from '#libs/contract/read-site-with-mathjs.js';
 import { siteSchema } from '#libs/contract/site-schema.js';
+import { STATE_WORDS } from '#libs/present/review-words.js';
 import { latestRevisions } from '#libs/store/revisions.js';
 import { deleteSite, insertSite, replaceSite } from '#libs/store/sites.js';
 import { Store } from '#libs/store/store.js';
@@ -24,7 +25,9 @@ export class SitesController {
       manager.find(StoredSite, { where: { organisationId }, order: { number: 'ASC' } }),
     );
     const revisions = await this.store.read((manager) => latestRevisions(manager, organisationId));
-    const latest = new Map(revisions.map(({ siteId, ...revision }) => [siteId, revision]));
+    const latest = new Map(
+      revisions.map(({ siteId, ...mark }) => [siteId, { ...mark, stateText: STATE_WORDS[mark.state] }]),
+    );
     return { sites: sites.map((site) => ({ ...headOf(site), latest: latest.get(site.id) ?? null })) };
   }
 

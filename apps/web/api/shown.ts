@@ -20,7 +20,7 @@ export interface SiteShown {
 
 /** A site in the list. */
 export interface SiteListed extends Omit<SiteShown, 'site'> {
-  latest: { revision: number; verdict: Verdict; proposed: string; createdAt: string } | null;
+  latest: { revision: number; verdict: Verdict; proposed: string; createdAt: string; stateText: string } | null;
 }
 
 /** A load record as the API gives it. */

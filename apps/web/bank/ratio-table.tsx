@@ -1,7 +1,7 @@
 import { Fragment } from 'react';
 import type { ReactorTrial } from '#libs/engine/index.js';
 import { formatNumber, formatQuantity } from '#libs/present/format-number.js';
-import { peakWords, trialReason } from '#libs/present/trial-rows.js';
+import { capitalIn, peakWords, trialReason } from '#libs/present/trial-rows.js';
 import { bankOf } from '../desk/desk-state.js';
 import { useDesk } from '../desk/use-desk.js';
 import { ScrollTable } from '../draw/scroll-table.js';
@@ -93,11 +93,6 @@ export function RatioTable() {
 function headsOf(currency: string | null): string[] {
   const cost = currency === null ? [] : [currency === '' ? 'costs new' : `costs new, ${currency}`];
   return ['reactors', 'tuned order', 'peaks', 'effective kvar', ...cost, 'verdict'];
-}
-
-/** A result that an earlier engine gave has no capital in its rows. */
-function capitalIn({ capital }: Partial<ReactorTrial>): number | null {
-  return capital ?? null;
 }
 
 function cellsOf(row: ReactorTrial, isPriced: boolean): string[] {

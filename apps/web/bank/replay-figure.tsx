@@ -5,6 +5,7 @@ import { formatClock } from '#libs/present/local-stamp.js';
 import { linearAxis, placeOnAxis } from '#libs/present/ticks.js';
 import { useDesk } from '../desk/use-desk.js';
 import { ChartFigure } from '../draw/chart-figure.js';
+import { textWidth } from '../draw/plot-box.js';
 import { usePlotWidth } from '../draw/plot-size.js';
 
 const TOP = 26;
@@ -12,6 +13,8 @@ const FIELD = 190;
 const ROW = 13;
 const LEFT = 40;
 const RIGHT = 52;
+/** Digits and small letters take less than the common width. */
+const WORDS = 0.92;
 
 /** A day replayed: load, need and the stages as blocks; below a row a stage; one cursor through both. */
 export function ReplayFigure({ replay, workings }: { replay: DayReplay; workings: readonly Figure[] }) {
@@ -83,11 +86,17 @@ function ReplaySvg({ replay, width, at, words }: { replay: DayReplay; width: num
       .join('');
   const cursor = x((atS[at] ?? 0) + intervalS / 2);
   const hours = Array.from({ length: Math.floor(lengthS / 10_800) + 1 }, (_, k) => k * 10_800);
+  const hourStep = width >= 520 ? 1 : width >= 300 ? 2 : 4;
+  const isRight = cursor + 9 + WORDS * textWidth(words) <= width;
+  // The words take the unit's place where they reach it.
+  const isUnitFree = isRight || cursor - 9 - textWidth(words) > LEFT;
   return (
     <svg width={width} height={height} aria-hidden="true">
-      <text className="axis" x={LEFT - 8} y={11} textAnchor="end">
-        kvar
-      </text>
+      {isUnitFree ? (
+        <text className="axis" x={LEFT - 8} y={11} textAnchor="end">
+          kvar
+        </text>
+      ) : null}
       {axis.ticks.map((tick) => (
         <g key={tick.at}>
           <path className={tick.at === 0 ? 'zero' : 'grid'} d={`M${LEFT} ${y(tick.at)}H${width - RIGHT}`} />
@@ -100,7 +109,7 @@ function ReplaySvg({ replay, width, at, words }: { replay: DayReplay; width: num
       <path className="line need" d={stair(replay.needKvar)} />
       <path className="line site" d={stair(replay.loadKvar)} />
       {hours.map((s, k) =>
-        width < 520 && k % 2 === 1 ? null : (
+        k % hourStep !== 0 ? null : (
           <text key={s} className="axis" x={x(s)} y={TOP + FIELD + 18} textAnchor={k === 0 ? 'start' : 'middle'}>
             {s === lengthS ? '24:00' : formatClock(s)}
           </text>
@@ -120,9 +129,9 @@ function ReplaySvg({ replay, width, at, words }: { replay: DayReplay; width: num
       <path className="fill-ink" d={`M${cursor - 5} ${TOP - 18}h10v6l-5 6-5-6Z`} />
       <text
         className="strong"
-        x={cursor > width - 190 ? cursor - 9 : cursor + 9}
+        x={isRight ? cursor + 9 : cursor - 9}
         y={TOP - 10}
-        textAnchor={cursor > width - 190 ? 'end' : 'start'}
+        textAnchor={isRight ? 'start' : 'end'}
       >
         {words}
       </text>

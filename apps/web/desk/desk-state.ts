@@ -110,6 +110,18 @@ export function studiedDocument(state: DeskState): SiteDocument | null {
   return { ...studied, control: { ...(document.control as object), setPointPowerFactor: setPoint } };
 }
 
+/**
+ * The site file as it is saved. A bank under the hand becomes the site's own, with the set point it was looked at with; a
+ * plan's bank stays the plan's.
+ */
+export function documentToKeep(state: DeskState, kind: 'plan' | 'assess'): SiteDocument | null {
+  const { document, trial } = state;
+  const studied = studiedDocument(state);
+  if (document === null || studied === null || trial === null || kind === 'plan') return document;
+  const { control } = studied;
+  return { ...document, bank: studied.bank ?? trial, ...(control === undefined ? {} : { control }) };
+}
+
 /** What the engine is asked for the open station. */
 export function lookAsked(state: DeskState, station: Station): LookAsked {
   const { kept, trial, picks } = state;

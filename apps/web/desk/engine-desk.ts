@@ -25,6 +25,7 @@ export class EngineDesk {
   #isLooking = false;
   #isWarm = false;
   #third: DeskLink | null = null;
+  #traced: Promise<Trace> | null = null;
   #firmAsked: LookAsked | null = null;
   #isFirming = false;
   readonly #open: { ask: 'open'; columnsUrl: string; summary: RecordSummary; timeZone: string };
@@ -87,9 +88,9 @@ export class EngineDesk {
   }
 
   /** @returns the record's own columns */
-  async trace(): Promise<Trace> {
-    await this.#opening;
-    return this.#far.ask({ ask: 'trace' }, 'trace');
+  trace(): Promise<Trace> {
+    this.#traced ??= this.#opening.then(() => this.#far.ask({ ask: 'trace' }, 'trace'));
+    return this.#traced;
   }
 
   close(): void {

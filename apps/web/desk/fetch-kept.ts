@@ -1,6 +1,6 @@
 import { ask } from '../api/ask.js';
-import type { RecordShown, ReviewShown, RevisionHeadShown, RevisionShown } from '../api/shown.js';
-import type { DeskState } from './desk-state.js';
+import type { RecordShown, ReviewShown, RevisionHeadShown, RevisionShown, SiteShown } from '../api/shown.js';
+import { type DeskState, documentToKeep } from './desk-state.js';
 
 /**
  * What the server keeps of a site: records, revisions, the latest revision with its review.
@@ -13,4 +13,10 @@ export async function fetchKept(path: string): Promise<Pick<DeskState, 'records'
   const kept = latest === undefined ? null : (await ask<RevisionShown>(latest.links.self)).body;
   const review = latest === undefined ? null : (await ask<ReviewShown>(`${latest.links.self}/review`)).body;
   return { records, revisions, kept, review };
+}
+
+/** Saves the site file over the version that was loaded. */
+export async function saveDocument(path: string, state: DeskState, kind: 'plan' | 'assess'): Promise<SiteShown> {
+  const headers = { 'if-match': `"${state.site!.version}"` };
+  return (await ask<SiteShown>(path, { method: 'PUT', json: documentToKeep(state, kind), headers })).body;
 }

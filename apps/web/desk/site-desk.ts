@@ -9,7 +9,7 @@ import { InputRefused } from './desk-link.js';
 import { type DeskState, isChanged, lookAsked, NOTHING_YET, staleFrom, studiedDocument } from './desk-state.js';
 import { dropDraft, keepDraft, readDraft } from './draft.js';
 import { EngineDesk } from './engine-desk.js';
-import { fetchKept } from './fetch-kept.js';
+import { fetchKept, saveDocument } from './fetch-kept.js';
 import { followJob, type JobEnd, keptJob } from './follow-job.js';
 import { fetchHeldPapers } from './held-papers.js';
 import type { Firmness, Look, LookAsked, Picks, Trace } from './look.js';
@@ -157,15 +157,7 @@ export class SiteDesk {
   }
 
   async #save(kind: 'plan' | 'assess'): Promise<void> {
-    const { site, document, trial } = this.#state;
-    const studied = studiedDocument(this.#state);
-    // A bank under the hand becomes the site's own; a plan's bank stays the plan's.
-    const own = trial === null || kind === 'plan' ? document : { ...document, bank: studied?.bank ?? trial };
-    const { body } = await ask<SiteShown>(this.#path, {
-      method: 'PUT',
-      json: own,
-      headers: { 'if-match': `"${site!.version}"` },
-    });
+    const body = await saveDocument(this.#path, this.#state, kind);
     dropDraft(this.siteId);
     this.#set({ site: body, document: body.site });
   }

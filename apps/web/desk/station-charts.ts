@@ -112,7 +112,7 @@ function recordYear(study: Study): NonNullable<StationCharts['record']>['year'] 
     zone: study.zone,
     beyond: null,
     finding: ({ most, gapPct }) =>
-      `Up to ${formatQuantity(most, 'kW')}${gapPct > 0.05 ? `; ${formatQuantity(gapPct, '%')} of the hours have no reading` : ', no hour without a reading'}`,
+      `Up to ${formatQuantity(most, 'kW')}${gapPct > 0 ? `; ${formatQuantity(gapPct, '%')} of the hours have no reading` : ', no hour without a reading'}`,
     table: monthTable(study.requirement.months),
   });
 }

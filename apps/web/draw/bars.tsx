@@ -100,25 +100,12 @@ function DutySvg({ figure, width }: { figure: BarFigure; width: number }) {
       <text className="axis" x={limit} y={11} textAnchor="middle">
         limit
       </text>
-      <path className="stroke-ink" strokeWidth="2" d={limitPath(bars, { limit, tall, lead, height })} />
+      <path className="stroke-ink" strokeWidth="2" d={`M${limit} 16V${height}`} />
       {bars.map((bar, k) => (
         <DutyRow key={bar.name} {...{ bar, hatch, width, scale, to, lead }} y={18 + k * tall} />
       ))}
     </svg>
   );
-}
-
-/** The limit down across all rows, left out where a name stands on it. */
-function limitPath(
-  bars: readonly Bar[],
-  { limit, tall, lead, height }: { limit: number; tall: number; lead: number; height: number },
-): string {
-  const parts = bars.map(({ name }, k) => {
-    const top = 18 + k * tall;
-    const from = textWidth(name) > limit - 8 ? top + lead + 16 : top - 2;
-    return `M${limit} ${from}V${Math.min(top + tall - 2, height)}`;
-  });
-  return parts.join('');
 }
 
 interface DutyRowProps {
@@ -140,7 +127,7 @@ function DutyRow({ bar, hatch, width, scale, to, lead, y: top }: DutyRowProps) {
     bar.verdict === 'avoid' ? 'fill-avoid' : bar.verdict === 'watch' ? 'stroke-watch' : 'fill-mid stroke-ink';
   return (
     <g>
-      <text x={0} y={top + 12}>
+      <text className="halo" x={0} y={top + 12}>
         {bar.name}
       </text>
       <path className="grid" d={`M0 ${y + 28}H${to * scale}`} />

@@ -4,6 +4,9 @@ import { ChartFigure } from './chart-figure.js';
 import { ChartSvg, type PartStyles } from './chart-svg.js';
 import { usePlotWidth } from './plot-size.js';
 
+/** A chart with one scale for both axes needs no more room [px]. */
+const SQUARE_PX = 460;
+
 /** A chart of lines as a figure, as wide as its place. */
 export function Plot({
   chart,
@@ -18,7 +21,7 @@ export function Plot({
   working?: readonly string[];
   workings?: readonly Figure[];
 }) {
-  const [place, width] = usePlotWidth();
+  const [place, width] = usePlotWidth(chart.equalScales ? SQUARE_PX : undefined);
   return (
     <ChartFigure figure={chart} working={working} workings={workings}>
       <div ref={place} className={chart.equalScales ? 'square' : undefined}>

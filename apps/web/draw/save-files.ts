@@ -24,11 +24,17 @@ export function csvOf({ columns, rows }: ChartTable): string {
     .join('\n');
 }
 
+const SVG = 'http://www.w3.org/2000/svg';
+/** Room around a drawing [px]. */
+const EDGE = 12;
+
 const DRAWN = [
   'fill',
   'stroke',
   'stroke-width',
   'stroke-dasharray',
+  'stroke-linejoin',
+  'paint-order',
   'font-family',
   'font-size',
   'font-weight',
@@ -46,10 +52,27 @@ export function svgOf(plot: HTMLElement | null, title: string): string {
     for (const name of DRAWN) element.setAttribute(name, style.getPropertyValue(name));
     element.removeAttribute('class');
   });
-  copy.setAttribute('xmlns', 'http://www.w3.org/2000/svg');
+  copy.setAttribute('xmlns', SVG);
   copy.removeAttribute('aria-hidden');
-  const name = document.createElementNS('http://www.w3.org/2000/svg', 'title');
+  const name = document.createElementNS(SVG, 'title');
   name.textContent = title;
-  copy.prepend(name);
+  copy.prepend(name, groundOf(drawn, copy));
   return new XMLSerializer().serializeToString(copy);
+}
+
+/** The sheet under a drawing, as large as all that is drawn; without it a dark theme's ink stands on white. */
+function groundOf(drawn: SVGSVGElement, copy: SVGSVGElement): SVGRectElement {
+  const { x, y, width, height } = drawn.getBBox();
+  const left = Math.min(0, x) - EDGE;
+  const top = Math.min(0, y) - EDGE;
+  const wide = Math.ceil(Math.max(drawn.clientWidth, x + width) + EDGE - left);
+  const high = Math.ceil(Math.max(drawn.clientHeight, y + height) + EDGE - top);
+  const ground = document.createElementNS(SVG, 'rect');
+  const place = { x: left, y: top, width: wide, height: high };
+  for (const [key, value] of Object.entries(place)) ground.setAttribute(key, String(value));
+  ground.setAttribute('fill', getComputedStyle(drawn).getPropertyValue('--sheet'));
+  copy.setAttribute('viewBox', `${left} ${top} ${wide} ${high}`);
+  copy.setAttribute('width', String(wide));
+  copy.setAttribute('height', String(high));
+  return ground;
 }

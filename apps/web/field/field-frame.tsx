@@ -1,5 +1,6 @@
 import type { ReactNode } from 'react';
 import type { Problem } from '#libs/engine/index.js';
+import { expectedWords } from '#libs/present/path-words.js';
 import { Mark } from '../draw/verdict-mark.js';
 
 /** Label above, value on a rule, unit after, as understood below; a refusal stands at its field. */
@@ -40,5 +41,5 @@ export function FieldFrame({
 export function refusalOf(problems: readonly Problem[], path: string): string | null {
   const problem = problems.find((one) => one.path === path);
   if (problem === undefined) return null;
-  return `Needs ${problem.expected}; found ${problem.found}.`;
+  return `Needs ${expectedWords(problem.expected)}; found ${problem.found}.`;
 }

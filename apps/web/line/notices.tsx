@@ -1,4 +1,4 @@
-import { pathWords } from '#libs/present/path-words.js';
+import { expectedWords, pathWords } from '#libs/present/path-words.js';
 import { siteAddress, stationOfPath } from '../address.js';
 import { useDesk } from '../desk/use-desk.js';
 import { DifferingFields } from './differing-fields.js';
@@ -31,7 +31,7 @@ export function Notices() {
       )}
       {(state.stage === 'unknown' ? [] : general).map(({ expected, found }) => (
         <p className="notice" role="alert" key={expected}>
-          Refused: it needs {expected}; found {found}.
+          Refused: it needs {expectedWords(expected)}; found {found}.
         </p>
       ))}
       {problems.length === general.length ? null : (
@@ -42,7 +42,7 @@ export function Notices() {
               path === undefined ? null : (
                 <li key={`${path} ${expected}`}>
                   <a href={siteAddress(desk.siteId, stationOfPath(path), { field: path })}>{inSentence(path)}</a>{' '}
-                  {`needs ${expected}; found ${found}.`}
+                  {`needs ${expectedWords(expected)}; found ${found}.`}
                 </li>
               ),
             )}

@@ -1,26 +1,36 @@
-import { lazy, type ReactNode, Suspense, useEffect, useState } from 'react';
+import { type ReactNode, useEffect, useState } from 'react';
 import { type Address, STATIONS, type Station } from '../address.js';
 import { isChanged } from '../desk/desk-state.js';
 import { SiteDesk } from '../desk/site-desk.js';
 import { DeskContext, useDesk } from '../desk/use-desk.js';
 import { picksOf } from '../working/asked-figure.js';
 import { Head } from './head.js';
+import { latePart, PartAwaited } from './late-part.js';
 import { latestResult } from './latest-result.js';
 import { Notices } from './notices.js';
 import { OpenPoints } from './open-points.js';
 import { StationLine } from './station-line.js';
 
-const SHEETS: Record<Station, React.LazyExoticComponent<() => ReactNode>> = {
-  record: lazy(() => import('../record/record-sheet.js').then(({ RecordSheet }) => ({ default: RecordSheet }))),
-  supply: lazy(() => import('../supply/supply-sheet.js').then(({ SupplySheet }) => ({ default: SupplySheet }))),
-  need: lazy(() => import('../need/need-sheet.js').then(({ NeedSheet }) => ({ default: NeedSheet }))),
-  bank: lazy(() => import('../bank/bank-sheet.js').then(({ BankSheet }) => ({ default: BankSheet }))),
-  network: lazy(() => import('../network/network-sheet.js').then(({ NetworkSheet }) => ({ default: NetworkSheet }))),
-  money: lazy(() => import('../money/money-sheet.js').then(({ MoneySheet }) => ({ default: MoneySheet }))),
-  proposal: lazy(() =>
-    import('../proposal/proposal-sheet.js').then(({ ProposalSheet }) => ({ default: ProposalSheet })),
-  ),
+const LOAD: Record<Station, () => Promise<() => ReactNode>> = {
+  record: () => import('../record/record-sheet.js').then(({ RecordSheet }) => RecordSheet),
+  supply: () => import('../supply/supply-sheet.js').then(({ SupplySheet }) => SupplySheet),
+  need: () => import('../need/need-sheet.js').then(({ NeedSheet }) => NeedSheet),
+  bank: () => import('../bank/bank-sheet.js').then(({ BankSheet }) => BankSheet),
+  network: () => import('../network/network-sheet.js').then(({ NetworkSheet }) => NetworkSheet),
+  money: () => import('../money/money-sheet.js').then(({ MoneySheet }) => MoneySheet),
+  proposal: () => import('../proposal/proposal-sheet.js').then(({ ProposalSheet }) => ProposalSheet),
 };
+const SHEETS = {
+  record: latePart(LOAD.record),
+  supply: latePart(LOAD.supply),
+  need: latePart(LOAD.need),
+  bank: latePart(LOAD.bank),
+  network: latePart(LOAD.network),
+  money: latePart(LOAD.money),
+  proposal: latePart(LOAD.proposal),
+};
+/** So long after a site is opened the other stations are fetched, so that they open without a connection [ms]. */
+const FETCH_OTHERS_MS = 5000;
 
 type SiteAddress = Extract<Address, { page: 'site' }>;
 
@@ -52,6 +62,12 @@ function OpenSite({ address }: { address: SiteAddress }) {
   }, [desk, figure, levelsKvar === undefined]);
   useEffect(() => desk.openStation(station), [desk, station]);
   useEffect(() => {
+    const timer = setTimeout(() => {
+      for (const load of Object.values(LOAD)) load().catch(() => undefined);
+    }, FETCH_OTHERS_MS);
+    return () => clearTimeout(timer);
+  }, []);
+  useEffect(() => {
     if (field !== null) focusField(field);
   }, [field]);
   useEffect(() => {
@@ -68,9 +84,9 @@ function OpenSite({ address }: { address: SiteAddress }) {
         <main className="station-sheet" aria-label={station}>
           <Notices />
           {state.stage === 'open' ? (
-            <Suspense fallback={<h1>{station.charAt(0).toUpperCase() + station.slice(1)}</h1>}>
+            <PartAwaited key={station} name={station.charAt(0).toUpperCase() + station.slice(1)}>
               <Sheet />
-            </Suspense>
+            </PartAwaited>
           ) : (
             <NotOpen />
           )}

@@ -11,7 +11,7 @@ import {
   priceBookWords,
   tariffWords,
 } from '#libs/present/money-words.js';
-import { headlineSaving } from '#libs/present/saving-words.js';
+import { headlineSaving, SAVING_CASE_WORDS } from '#libs/present/saving-words.js';
 import { withHeldPapers } from '../desk/held-papers.js';
 import { useDesk } from '../desk/use-desk.js';
 import { Plot } from '../draw/plot.js';
@@ -79,6 +79,7 @@ function Figures({ money, papers, isOver }: { money: Money; papers: MoneyPapers;
       <Headline figures={isPriced(money) ? keyFigures(money, currency) : []}>
         {savingSentence(money, saving, isOver)}
       </Headline>
+      <SavingCases money={money} currency={currency} />
       <p className="caption">
         {tariffWords(papers)} {priceBookWords(papers)} {isPriced(money) ? financeWords(papers) : ''}
       </p>
@@ -102,6 +103,15 @@ function Figures({ money, papers, isOver }: { money: Money; papers: MoneyPapers;
       {isPriced(money) ? <CapitalTable money={money} currency={currency} /> : null}
     </>
   );
+}
+
+/** Whose saving the headline is, beside those of the other cases; what follows it is told of one of them. */
+function SavingCases({ money: { savingRange }, currency }: { money: Money; currency: string }) {
+  if (savingRange === null) return null;
+  const cases = savingRange.cases.map(
+    ({ name, savingPerYear }) => `${formatMoney(savingPerYear, currency)} ${SAVING_CASE_WORDS[name]}`,
+  );
+  return <p>A year: {cases.join('; ')}. Bills, value and payback below are those with an ideal controller.</p>;
 }
 
 function keyFigures(money: PricedMoney, currency: string) {

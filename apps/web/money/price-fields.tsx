@@ -35,7 +35,7 @@ function OwnPrices({ currency, isInvented }: { currency: string; isInvented: boo
   return (
     <>
       <p className="caption">
-        {`In ${currency}; kvar are rated kvar. What is left empty costs nothing.`}
+        {`${currency === 'amount' ? 'Amounts without a currency' : `In ${currency}`}; kvar are rated kvar. What is left empty costs nothing.`}
         {isInvented ? ' These prices are made up: put real ones in before anything is decided.' : ''}
       </p>
       <div className="fields">

@@ -98,5 +98,8 @@ function headline({ verdict, bank, duties }: Result, charts: StationCharts['netw
 
 function rivalWords({ name, verdict, margins }: NonNullable<NonNullable<StationCharts['network']>['rival']>): string {
   if (verdict === 'clear') return ` ${name}: within limits.`;
-  return ` ${margins.finding}.`;
+  // The map tells of harmonic voltage alone; what else is near or over a limit is not passed over.
+  const isOverInMap = margins.marks.some((mark) => mark.kind === 'cell' && mark.fill === 'solid');
+  if (isOverInMap) return ` ${margins.finding}.`;
+  return verdict === 'avoid' ? ` ${name}: over a limit of the bank itself.` : ` ${name}: over no limit, but near one.`;
 }

@@ -8,6 +8,7 @@ import { AskedInPlace } from './asked-in-place.js';
 import { FileChoices } from './file-choices.js';
 import { ImportProgress } from './import-progress.js';
 import { KeepAnswers } from './keep-answers.js';
+import { RunningClock } from './running-clock.js';
 import { useMeterFile } from './use-meter-file.js';
 
 /** Where a meter file is dropped, what it leaves open is asked, and what could not be read is said. */
@@ -35,7 +36,7 @@ export function MeterFileDrop() {
   const { answers } = reading.said;
   const used = keptMaps.find(({ name }) => name === reading.said.keptMap);
   return (
-    <section className="section" aria-labelledby="drop">
+    <section className="section no-print" aria-labelledby="drop">
       <h2 id="drop">{state.records.length === 0 ? 'The meter file' : 'Another meter file'}</h2>
       <FileChoices
         record={state.records[0]}
@@ -70,6 +71,12 @@ export function MeterFileDrop() {
           <span>{words}</span>
         </p>
       ))}
+      {reading.isClockRunning && reading.file !== null ? (
+        <RunningClock
+          timeZone={String(state.document?.timeZone ?? 'UTC')}
+          onAnswer={(zone) => answer({ answers: { timeZone: zone } })}
+        />
+      ) : null}
       {reading.offered.map(({ id, name }) => (
         <p key={id} className="row gap">
           <button type="button" className="button" onClick={() => answer({ keptMap: name })}>

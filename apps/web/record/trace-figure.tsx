@@ -4,6 +4,7 @@ import { formatMoment } from '#libs/present/local-stamp.js';
 import type { RecordShown } from '../api/shown.js';
 import type { Trace } from '../desk/look.js';
 import { ChartFigure, type Figured } from '../draw/chart-figure.js';
+import { useOnPaper } from '../draw/on-paper.js';
 import { usePlotWidth } from '../draw/plot-size.js';
 import { useTheme } from '../theme.js';
 import { drawTrace, type TraceView } from './draw-trace.js';
@@ -37,7 +38,9 @@ export function TraceFigure({
     <ChartFigure
       figure={figure}
       steps={false}
-      picture={() => (trace === null ? '' : tracePicture(traceRows(trace, shown, MOST_STROKES), figure.finding))}
+      picture={() =>
+        trace === null ? '' : tracePicture(traceRows(trace, shown, MOST_STROKES), figure.finding, trace.zone)
+      }
     >
       <div ref={place} style={{ minHeight: HEIGHT }}>
         {trace === null || width === 0 ? null : (
@@ -130,14 +133,15 @@ function TraceCanvas({ trace, record, width, dayS, onRest }: TraceCanvasProps) {
   const view = useRef<TraceView>({ from: 0, to: n });
   const rested = useRested(onRest);
   const theme = useTheme();
+  const isOnPaper = useOnPaper();
   const draw = () => {
     if (canvas.current === null || words.current === null) return;
     drawTrace(canvas.current, { trace, ...pyramids, suspect, view: view.current, width, height: HEIGHT });
     const momentOf = (slot: number) => formatMoment(trace.zone, trace.firstS + Math.round(slot) * trace.intervalS);
     words.current.textContent = `${momentOf(view.current.from)} to ${momentOf(view.current.to)}`;
   };
-  // biome-ignore lint/correctness/useExhaustiveDependencies: drawn again for another width or theme
-  useEffect(draw, [width, theme, trace]);
+  // biome-ignore lint/correctness/useExhaustiveDependencies: drawn again for another width, theme or paper
+  useEffect(draw, [width, theme, isOnPaper, trace]);
   // biome-ignore lint/correctness/useExhaustiveDependencies: a day that is picked is shown once
   useEffect(() => {
     if (dayS !== null) show((dayS - trace.firstS) / trace.intervalS, DAY_S / trace.intervalS);

@@ -30,8 +30,9 @@ describe('the rows of a trace', () => {
   });
 
   it('are drawn as a stroke each in both panes', () => {
-    const picture = tracePicture(traceRows(trace, { from: 0, to: 6 }, 3), 'The record');
+    const picture = tracePicture(traceRows(trace, { from: 0, to: 6 }, 3), 'The record', UTC_TABLE);
     expect(picture.match(/M[\d.]+ [\d.]+V/g)).toHaveLength(6);
     expect(picture).not.toContain('NaN');
+    expect(picture.match(/1\u00a0Jan\u00a01970/g)).toHaveLength(3);
   });
 });

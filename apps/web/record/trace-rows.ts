@@ -1,3 +1,6 @@
+import type { ZoneTable } from '#libs/engine/index.js';
+import { formatNumber } from '#libs/present/format-number.js';
+import { formatMoment } from '#libs/present/local-stamp.js';
 import type { Trace } from '../desk/look.js';
 import type { TraceView } from './draw-trace.js';
 
@@ -57,12 +60,38 @@ const LEFT = 60;
  * The rows as a drawing: kW above, kvar below, from the least to the most of each stretch.
  * @param rows what is in view
  * @param title its finding
+ * @param zone the site's clock, which the times below are told by
  */
-export function tracePicture(rows: readonly TraceRow[], title: string): string {
+export function tracePicture(rows: readonly TraceRow[], title: string, zone: ZoneTable): string {
   const panes = (['kw', 'kvar'] as const).map((key, k) =>
-    pane(rows, key, { top: 20 + k * (PANE + 30), unit: key === 'kw' ? 'kW' : 'kvar' }),
+    pane(rows, key, {
+      top: 20 + k * (PANE + 30),
+      unit: key === 'kw' ? 'kW' : 'kvar',
+    }),
   );
-  return `<svg xmlns="http://www.w3.org/2000/svg" width="${WIDTH}" height="${2 * PANE + 70}" font-family="sans-serif" font-size="12" fill="#14202b"><title>${title}</title>${panes.join('')}</svg>`;
+  return `<svg xmlns="http://www.w3.org/2000/svg" width="${WIDTH}" height="${2 * PANE + 76}" font-family="sans-serif" font-size="12" fill="#14202b"><title>${title}</title><rect width="100%" height="100%" fill="#fbfcfa"/>${panes.join('')}${timesBelow(rows, zone)}</svg>`;
+}
+
+/** Where the first, the middle and the last stretch begin. */
+function timesBelow(rows: readonly TraceRow[], zone: ZoneTable): string {
+  const y = 2 * PANE + 64;
+  const last = rows.length - 1;
+  const places = [
+    { at: 0, x: LEFT, anchor: 'start' },
+    {
+      at: Math.floor(last / 2),
+      x: LEFT + (WIDTH - LEFT) / 2,
+      anchor: 'middle',
+    },
+    { at: last, x: WIDTH - 4, anchor: 'end' },
+  ];
+  const texts = places.map(({ at, x, anchor }) => {
+    const row = rows[at];
+    return row === undefined
+      ? ''
+      : `<text x="${x}" y="${y}" text-anchor="${anchor}">${formatMoment(zone, row.beginS)}</text>`;
+  });
+  return texts.join('');
 }
 
 function pane(rows: readonly TraceRow[], key: 'kw' | 'kvar', { top, unit }: { top: number; unit: string }): string {
@@ -78,7 +107,7 @@ function pane(rows: readonly TraceRow[], key: 'kw' | 'kvar', { top, unit }: { to
     return `M${x} ${y(Math.min(pair[0], pair[1] - 1e-3 * (most - least)))}V${y(pair[1])}`;
   });
   const words = [most, least].map(
-    (value) => `<text x="${LEFT - 8}" y="${y(value)}" text-anchor="end">${value.toFixed(0)}</text>`,
+    (value) => `<text x="${LEFT - 8}" y="${y(value)}" text-anchor="end">${formatNumber(value)}</text>`,
   );
   return `${words.join('')}<text x="0" y="${top - 6}">${unit}</text><path d="M${LEFT} ${y(0)}H${WIDTH}" stroke="#14202b"/><path d="${bars.join('')}" stroke="#14202b" stroke-width="${Math.max(0.8, 0.7 * wide).toFixed(1)}"/>`;
 }

@@ -16,6 +16,8 @@ export interface MeterFileState {
   isReading: boolean;
   job: JobShown | null;
   refusals: string[];
+  /** a value stands in an hour that the site's clock leaves out: the meter's runs through */
+  isClockRunning: boolean;
   questions: readonly QuestionAsked[];
   /** kept answers for files with this header: nothing of them is taken unasked */
   offered: readonly { id: string; name: string }[];
@@ -29,6 +31,7 @@ const NOTHING: MeterFileState = {
   isReading: false,
   job: null,
   refusals: [],
+  isClockRunning: false,
   questions: [],
   offered: [],
   read: null,
@@ -52,10 +55,7 @@ export function useMeterFile(desk: SiteDesk) {
         }
         put({ read });
       } catch (error) {
-        const problem = error instanceof Refused ? error.problem : null;
-        const questions = problem?.questions ?? [];
-        const refusals = questions.length === 0 ? refusalWords(error) : [];
-        put({ questions, offered: problem?.offered ?? [], refusals });
+        put(refusedWith(error));
       }
       put({ isReading: false, job: null });
     },
@@ -81,6 +81,18 @@ export function useMeterFile(desk: SiteDesk) {
     read(file, { ...said, answers: mergedMap(said.answers, answers), keptMap: keptMap ?? said.keptMap });
   };
   return { state, read, answer };
+}
+
+/** What a reading that was refused leaves to be asked or said. */
+function refusedWith(error: unknown): Partial<MeterFileState> {
+  const problem = error instanceof Refused ? error.problem : null;
+  const questions = problem?.questions ?? [];
+  return {
+    questions,
+    offered: problem?.offered ?? [],
+    refusals: questions.length === 0 ? refusalWords(error) : [],
+    isClockRunning: problem?.problems.some(({ code, path }) => code === 'bad-time' && path === 'timeZone') ?? false,
+  };
 }
 
 function refusalWords(error: unknown): string[] {

@@ -4,14 +4,18 @@ import { useDesk } from '../desk/use-desk.js';
 
 /** The columns of a record once the engine has them, null until then. */
 export function useTrace(recordId: string | undefined): Trace | null {
-  const { desk } = useDesk();
+  const { desk, state } = useDesk();
   const [found, setFound] = useState<{ recordId: string; trace: Trace } | null>(null);
+  const isLooked = state.look !== null;
+  const isFound = found !== null && found.recordId === recordId;
+  // biome-ignore lint/correctness/useExhaustiveDependencies: a record just read has no engine until its first look
   useEffect(() => {
     let isCurrent = true;
-    if (recordId !== undefined) void desk.trace()?.then((trace) => isCurrent && setFound({ recordId, trace }));
+    if (recordId !== undefined && !isFound)
+      void desk.trace()?.then((trace) => isCurrent && setFound({ recordId, trace }));
     return () => {
       isCurrent = false;
     };
-  }, [desk, recordId]);
-  return found !== null && found.recordId === recordId ? found.trace : null;
+  }, [desk, recordId, isLooked, isFound]);
+  return isFound ? found.trace : null;
 }

@@ -1,6 +1,6 @@
 import { useState } from 'react';
 import type { Problem } from '#libs/engine/index.js';
-import { pathWords } from '#libs/present/path-words.js';
+import { expectedWords, pathWords } from '#libs/present/path-words.js';
 import { siteAddress } from '../address.js';
 import { ask, NoConnection, Refused } from '../api/ask.js';
 import type { SiteShown } from '../api/shown.js';
@@ -15,7 +15,10 @@ export function NewSite() {
   );
   const [problems, setProblems] = useState<readonly Problem[]>([]);
   const [failure, setFailure] = useState('');
-  const create = async (document: unknown, added?: (siteId: string) => Promise<unknown>) => {
+  const create = async (
+    document: unknown,
+    { from, added }: { from?: string; added?: (siteId: string) => Promise<unknown> } = {},
+  ) => {
     setProblems([]);
     setFailure('');
     try {
@@ -24,8 +27,10 @@ export function NewSite() {
       window.location.hash = siteAddress(body.id, 'record');
     } catch (error) {
       if (error instanceof Refused) {
-        setProblems(error.problem.problems);
-        setFailure(refusalWords(error.problem.problems));
+        // What a file says wrongly is no fault of what stands in the fields.
+        const own = from === undefined ? error.problem.problems : [];
+        setProblems(own);
+        setFailure(refusalWords(error.problem.problems, from ?? null));
       } else
         setFailure(error instanceof NoConnection ? 'Not added: no connection. What you typed is kept.' : String(error));
     }
@@ -33,7 +38,7 @@ export function NewSite() {
   const example = async () => {
     try {
       const { body } = await ask<Record<string, unknown>>('/api/demo/site.json');
-      await create(body, sendExampleRecord);
+      await create(body, { from: 'The example', added: sendExampleRecord });
     } catch {
       setFailure('Not added: no connection.');
     }
@@ -41,13 +46,13 @@ export function NewSite() {
   const importFile = async (file: File | undefined) => {
     if (file === undefined) return;
     try {
-      await create(JSON.parse(await file.text()));
+      await create(JSON.parse(await file.text()), { from: file.name });
     } catch {
       setFailure(`${file.name} is no site file: it holds no JSON.`);
     }
   };
   return (
-    <section className="section" aria-labelledby="new-site">
+    <section className="section no-print" aria-labelledby="new-site">
       <h2 id="new-site">A new site</h2>
       <p className="caption">From the main switchboard’s nameplates; all else can wait.</p>
       <form
@@ -63,7 +68,10 @@ export function NewSite() {
               field={field}
               value={values[field.path] ?? ''}
               problems={problems}
-              onType={(text) => setValues({ ...values, [field.path]: text })}
+              onType={(text) => {
+                setValues({ ...values, [field.path]: text });
+                setProblems(problems.filter(({ path }) => path !== field.path));
+              }}
             />
           ))}
         </div>
@@ -93,11 +101,18 @@ export function NewSite() {
   );
 }
 
-/** What is said of a refusal as a whole; what has a field in the form is said there. */
-function refusalWords(problems: readonly Problem[]): string {
-  const others = problems.filter(({ path }) => !BLANK.some((field) => field.path === path));
-  const told = others.map(({ path, expected }) => `${path === undefined ? 'it' : pathWords(path)} needs ${expected}`);
-  return told.length === 0 ? 'Not added: see the marked field.' : `Not added: ${told.join('; ')}.`;
+/**
+ * What is said of a refusal as a whole; what has a field in the form is said there.
+ * @param from the file that was refused, null for the form
+ */
+function refusalWords(problems: readonly Problem[], from: string | null): string {
+  const others = from === null ? problems.filter(({ path }) => !BLANK.some((field) => field.path === path)) : problems;
+  const told = others.map((problem) => {
+    const place = problem.path === undefined ? 'it' : pathWords(problem.path);
+    return `${place} needs ${expectedWords(problem.expected)}; found ${problem.found}`;
+  });
+  if (told.length === 0) return 'Not added: see the marked field.';
+  return `${from === null ? 'Not added' : `${from} was not added`}: ${told.join('. ')}.`;
 }
 
 /** The example's own meter file, from this server and back to it. */

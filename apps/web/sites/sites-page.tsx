@@ -27,7 +27,7 @@ export function SitesPage() {
       <main className="sites">
         <div className="headline">
           <h1>{headline(sites?.filter(({ id }) => !gone.has(id)) ?? null)}</h1>
-          <div className="field">
+          <div className="field no-print">
             <label htmlFor="search">search</label>
             <span className="rule">
               <input id="search" type="search" value={search} onChange={({ target }) => setSearch(target.value)} />
@@ -127,7 +127,8 @@ function SiteRow({ site, onChange, onRemove }: { site: SiteListed; onChange: () 
       <div>
         {site.latest === null ? null : <VerdictWords verdict={site.latest.verdict} />}
         <p className="caption">
-          {site.latest === null ? '' : `revision ${site.latest.revision}, draft, `}changed {site.updatedAt.slice(0, 10)}
+          {site.latest === null ? '' : `revision ${site.latest.revision}, ${site.latest.stateText}, `}changed{' '}
+          {site.updatedAt.slice(0, 10)}
         </p>
       </div>
       <p className="row">

@@ -136,6 +136,7 @@ function refuseSkipped(rows: StampedRows, index: number, zone: ZoneTable): never
   throw new InputProblem([
     {
       code: 'bad-time',
+      path: 'timeZone',
       row: rows.rowNumber[index]!,
       expected: `a time that the clocks of ${zone.zone} showed; where the meter keeps one offset all year, say which by its time zone`,
       found: `${describeDate(rows, index)} ${two(Math.floor(clockS / 3600))}:${two(Math.floor(clockS / 60) % 60)}, in the hour that was skipped`,

@@ -14,7 +14,7 @@ export const GERMAN_FIGURE_TEXTS: Readonly<Record<string, string>> = {
   together: 'zusammen',
   bill: 'Rechnung',
   'Payback: {0}': 'Amortisation: {0}',
-  'Paid back after {0}': 'Amortisiert nach {0}',
+  'Paid back after {0}': 'Amortisationsdauer {0}',
   'Bars: net of each year, the capital at 0. Line: their sum, month by month, not discounted. Ring: paid back.':
     'Balken: Überschuss jedes Jahres, die Investition bei 0. Linie: deren Summe, Monat für Monat, nicht abgezinst. Ring: amortisiert.',
   '{0} are paid at the beginning; after {1} years the sum is {2}.':
@@ -128,8 +128,8 @@ export const GERMAN_FIGURE_TEXTS: Readonly<Record<string, string>> = {
   '{0}: {1} of {2} levels over a limit': '{0}: {1} von {2} Schaltzuständen über einem Grenzwert',
   'Harmonic voltage, % of its limit, worst corner; rows are levels in kvar, columns orders.{0}':
     'Oberschwingungsspannung in % des Grenzwerts, ungünstigster Eckfall; Zeilen: Schaltzustände in kvar, Spalten: Ordnungen.{0}',
-  'Harmonic voltage as a share of its limit for {0} levels and {1} orders; the table holds every number.':
-    'Oberschwingungsspannung als Anteil des Grenzwerts für {0} Schaltzustände und {1} Ordnungen; die Tabelle enthält jeden Wert.',
+  'Harmonic voltage as a share of its limit for {0} levels and {1} orders: at the most {2} %, order {3} with {4} connected.':
+    'Oberschwingungsspannung als Anteil des Grenzwerts für {0} Schaltzustände und {1} Ordnungen: höchstens {2} %, Ordnung {3} mit {4} zugeschaltet.',
   'The supply’s current falls from {0} to {1}': 'Der Netzstrom sinkt von {0} auf {1}',
   'No stage is connected at this moment': 'In diesem Augenblick ist keine Stufe zugeschaltet',
   'Currents at {0} V in the interval from {1}; voltage to the right, lagging downwards.':

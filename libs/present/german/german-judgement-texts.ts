@@ -115,6 +115,8 @@ export const GERMAN_JUDGEMENT_TEXTS: Readonly<Record<string, string>> = {
   'peaks, order': 'Überhöhung, Ordnung',
   'all stages': 'alle Stufen',
   'current of a stage': 'Strom einer Stufe',
+  'costs new': 'Neupreis',
+  'costs new, {0}': 'Neupreis, {0}',
   'ripple left': 'Signal bleibt',
   why: 'warum',
   'filter ': 'Filter ',
