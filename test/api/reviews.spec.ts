@@ -77,6 +77,7 @@ for (const { name, available, create } of usualDatabases) {
       expect((await server.ask('POST', at(1, '/review/submit'), {})).status).toBe(428);
       const { status, body } = await act(1, 'submit', {}, '"7"');
       expect([status, body.code, body.detail]).toEqual([412, 'stale', 'expected version 1, found version 7']);
+      expect(body.versions).toEqual({ seen: 7, current: 1 });
     });
 
     it('is refused to whoever prepared the plan, then allowed by the administrator, and says so', async () => {
