@@ -120,6 +120,7 @@ export const GERMAN_NAME_TEXTS: Readonly<Record<string, string>> = {
   'derived: zero-sequence currents add in the neutral': 'hergeleitet: Nullströme addieren sich im Neutralleiter',
   'closed form after IEEE C37.99, an estimate': 'geschlossene Formel nach IEEE C37.99, eine Näherung',
   '{0}, group {1}': '{0}, Gruppe {1}',
+  '{0}, group\u00a0{1}': '{0}, Gruppe\u00a0{1}',
   '{0} class {1}': '{0}, Klasse {1}',
   '{0} out': '{0} außer Betrieb',
   'transformer {0} out': 'Transformator {0} außer Betrieb',
