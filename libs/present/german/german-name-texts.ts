@@ -127,4 +127,5 @@ export const GERMAN_NAME_TEXTS: Readonly<Record<string, string>> = {
   '{0} closed': '{0} geschlossen',
   '{0} running': '{0} in Betrieb',
   '{0} with {1} stages in': '{0} mit {1} Stufen zugeschaltet',
+  '{0} with one stage in': '{0} mit einer Stufe zugeschaltet',
 };
