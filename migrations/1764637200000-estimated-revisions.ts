@@ -1,4 +1,5 @@
 import type { MigrationInterface, QueryRunner } from 'typeorm';
+import { refuseWhere } from './refuse-where.js';
 
 const COLUMNS = ['recordId', 'recordHash'];
 
@@ -9,6 +10,7 @@ export class EstimatedRevisions1764637200000 implements MigrationInterface {
   }
 
   async down(runner: QueryRunner): Promise<void> {
+    await refuseWhere(runner, 'revision', '"recordId" IS NULL', 'revisions without a record');
     await allowAbsent(runner, false);
   }
 }

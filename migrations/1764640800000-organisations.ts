@@ -1,5 +1,6 @@
 import { type MigrationInterface, type QueryRunner, Table, TableColumn, TableForeignKey, TableIndex } from 'typeorm';
 import { sqlType } from '#libs/store/columns.js';
+import { refuseWhere, repeated } from './refuse-where.js';
 
 /** What the organisation of a table decides: numbers and names are counted and taken within one. */
 const OWNED = [
@@ -22,6 +23,9 @@ export class Organisations1764640800000 implements MigrationInterface {
   }
 
   async down(runner: QueryRunner): Promise<void> {
+    for (const { table, column } of OWNED) {
+      await refuseWhere(runner, table, repeated(table, [column]), 'equal numbers and names in two organisations');
+    }
     for (const { table, index, column } of OWNED) {
       await runner.dropIndex(table, index);
       await runner.createIndex(table, uniqueIndex(index, [column]));

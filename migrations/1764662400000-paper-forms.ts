@@ -1,4 +1,5 @@
 import { type MigrationInterface, type QueryRunner, TableColumn, TableIndex } from 'typeorm';
+import { refuseWhere, repeated } from './refuse-where.js';
 
 const CONTENT = { name: 'revision_content', columnNames: ['siteId', 'contentHash'] };
 
@@ -14,6 +15,8 @@ export class PaperForms1764662400000 implements MigrationInterface {
   }
 
   async down(runner: QueryRunner): Promise<void> {
+    const why = 'revisions of equal inputs on other papers, or after one that has ended';
+    await refuseWhere(runner, 'revision', repeated('revision', CONTENT.columnNames), why);
     await runner.dropIndex('revision', CONTENT.name);
     await runner.createIndex('revision', new TableIndex({ ...CONTENT, isUnique: true }));
     await runner.dropColumn('revision', 'paperForm');

@@ -27,6 +27,7 @@ import { packAnswer, type WorkerAnswer } from '#libs/jobs/pool/worker-answer.js'
 import { putEstimateInWords, putInWords } from '#libs/present/put-in-words.js';
 import { type SiteRow, siteRow } from '#libs/present/sites-table.js';
 import { estimateReport, resultReport } from '#libs/present/terminal-report.js';
+import { withTonight } from '#libs/present/tonight-words.js';
 import type { PaperSheet } from './paper-sheet.js';
 
 /** A site to plan or judge. */
@@ -60,9 +61,9 @@ export function judgeTask({ task, port }: { task: JudgeTask; port: MessagePort }
     const watch = portWatch(port);
     const outcome = task.record === null ? byEstimate(task, watch) : byRecord(task, task.record, watch);
     // A bank that stands there and is over a limit comes with what to do at once.
-    const tonight = task.kind === 'assess' ? installedTonight(task.site, task.record, task.zone) : null;
+    const tonight = installedTonight(outcome, task.site);
     return {
-      result: outcome.result,
+      result: isEstimate(outcome) || task.kind === 'plan' ? outcome.result : withTonight(outcome.result, tonight),
       report: isEstimate(outcome) ? estimateReport(outcome) : resultReport(outcome, tonight),
       row: siteRow(outcome),
       proposal: task.sheet === null ? null : await proposalOf(outcome, task, { ...task.sheet, tonight }),

@@ -19,6 +19,7 @@ import {
 import { putInWords } from '#libs/present/put-in-words.js';
 import { reevaluationReport } from '#libs/present/reevaluation-report.js';
 import { resultReport } from '#libs/present/terminal-report.js';
+import { withTonight } from '#libs/present/tonight-words.js';
 import type { CommandLine } from './command.js';
 import { usage } from './command-line.js';
 import { readMeterRecord } from './meter-record.js';
@@ -57,7 +58,8 @@ export async function reevaluate(line: CommandLine): Promise<number> {
   }
   for (const path of await exports.write(judged.after)) say(`written: ${path}`);
   const { result } = judged.after;
-  if (line.flags.has('json')) await writeJson({ ...result, reevaluation: judged.reevaluation });
+  if (line.flags.has('json'))
+    await writeJson({ ...withTonight(result, judged.reevaluation), reevaluation: judged.reevaluation });
   else await write(`${reevaluationReport(judged)}\n${resultReport(judged.after)}`);
   return result.verdict === 'avoid' ? EXIT.avoid : EXIT.done;
 }

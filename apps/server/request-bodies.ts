@@ -5,7 +5,12 @@ const UPLOADS = /\/records(\/:recordId\/revisions)?$|^\/api\/(verify|site-import
 /** Pages that work without scripts send forms; nothing else takes them. */
 const FORMS = /^\/(sign-in|sign-out|people|account)(\/|$)/;
 const FORM_TYPE = 'application/x-www-form-urlencoded';
-const FILE_TYPES = ['text/csv', 'application/octet-stream', 'application/pdf'];
+const FILE_TYPES = [
+  'text/csv',
+  'application/octet-stream',
+  'application/pdf',
+  'application/vnd.openxmlformats-officedocument.spreadsheetml.sheet',
+];
 
 /**
  * Reads bodies as JSON, on the routes that take files as files, and refuses every other kind.
@@ -32,7 +37,7 @@ export function refuseOtherBodies(fastify: FastifyInstance): void {
     const isUpload = takesFile(request);
     const type = request.headers['content-type'] ?? 'nothing';
     const isFile = request.isMultipart() || FILE_TYPES.some((known) => type.startsWith(known));
-    if (isUpload && !isFile) throw otherType(`multipart/form-data, ${FILE_TYPES.join(' or ')}`);
+    if (isUpload && !isFile) throw otherType(`multipart/form-data or ${FILE_TYPES.join(' or ')}`);
     if (!isUpload && isFile) throw otherType('application/json');
   });
 }

@@ -106,5 +106,6 @@ describe('the words of a path in another language', () => {
     );
     expect(inLanguage(GERMAN, () => standingName('2 of C1'))).toBe('2 von C1');
     expect(standingName('Bank 2 with 1 + 3 stages in, 2 of C1')).toBe('Bank 2 with 1 + 3 stages in, 2 of C1');
+    expect(standingName('Bank 2 with 1 stages in')).toBe('Bank 2 with one stage in');
   });
 });

@@ -200,7 +200,7 @@ export const REASON_MESSAGES: Messages = {
   },
   'ageing.overLimit': {
     level: 'to be accepted',
-    text: 'With {leftPct} of the capacitance left[ in one stage of group {group}] the bank passes a limit[, tuned to order {tunedOrderH}].',
+    text: 'With {leftPct} of the capacitance left[ in one stage of group {group}] the bank passes a limit[, tuned to order {tunedOrderH}]: {duty}.',
     consequence: 'Measure the capacitance every year and take a stage out at the value printed.',
   },
   'ageing.takeOut': {

@@ -59,7 +59,7 @@ export function changeRows({ changes }: Pick<Reevaluation, 'changes'>, currency:
 
 function nameOf({ id, name, group }: ResultChange): string {
   if (name === null) return FIGURE_NAMES[id];
-  return group === null ? engineName(name) : say`${engineName(name)}, group ${group + 1}`;
+  return group === null ? engineName(name) : say`${engineName(name)}, group\u00a0${group + 1}`;
 }
 
 /** Heads of the table of remedies. */

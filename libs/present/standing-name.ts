@@ -17,7 +17,9 @@ function partName(part: string): string {
   if (ending === 'closed') return say`${name} closed`;
   if (ending === 'running') return say`${name} running`;
   const [, bank, stages] = /^(.+) with ([\d +]+) stages in$/.exec(part) ?? [];
-  if (bank !== undefined) return say`${bank} with ${stages!} stages in`;
+  if (bank !== undefined) {
+    return stages === '1' ? say`${bank} with one stage in` : say`${bank} with ${stages!} stages in`;
+  }
   const [, count, capacitors] = /^(\d+) of (.+)$/.exec(part) ?? [];
   return count === undefined ? part : say`${count} of ${capacitors!}`;
 }

@@ -1,10 +1,31 @@
-import type { BankTonight, MeasuredEntry, StagesOut, ToMend } from '#libs/engine/index.js';
+import type { BankTonight, MeasuredEntry, Result, StagesOut, ToMend, Tonight } from '#libs/engine/index.js';
 import { deviceName } from './device-words.js';
 import { engineName } from './engine-name.js';
 import { countWord } from './findings.js';
 import { formatQuantity } from './format-number.js';
 import { say } from './language.js';
 import { VERDICT_WORDS } from './verdict-words.js';
+
+/** What to do at once with an installed bank, as a result carries it. */
+export interface TonightInWords extends Tonight {
+  /** entries of the bank as it measures, as `out` of the stages out counts them */
+  stages: MeasuredEntry[];
+  sentences: string[];
+}
+
+/**
+ * The result of a bank that was judged, with what to do at once.
+ * @param result of the bank
+ * @param bank stages of an installed bank and which to keep out; null for a bank that is not installed
+ * @returns the result with `tonight`, null where there is nothing to do
+ */
+export function withTonight<Judged extends Result>(
+  result: Judged,
+  bank: BankTonight | null,
+): Judged & { tonight: TonightInWords | null } {
+  if (bank === null || bank.tonight === null) return { ...result, tonight: null };
+  return { ...result, tonight: { ...bank.tonight, stages: bank.stages, sentences: tonightSentences(bank) } };
+}
 
 /**
  * What to do tonight with a bank that is over a limit: which stages out, by whom, until when.

@@ -36,6 +36,18 @@ export const UNUSUAL_MESSAGES: Messages = {
     'The target power factor of {targetPowerFactor} is below what tariffs ask for, {leastPowerFactor} and more.',
     'Read the tariff; a tan φ is not a power factor.',
   ),
+  'target.belowTariff': unusual(
+    'The target power factor is {targetPowerFactor}, and the tariff charges below {freePowerFactor} by its line “{name}”.',
+    'Set the target by the tariff, or accept what is charged in between.',
+  ),
+  'record.unlikeBills': unusual(
+    'The bill of {month} says {billKwh} and the record {recordKwh}; {months:month differs|months differ} by more than 5 %.',
+    'Ask which transformer ratio the meter’s readings were multiplied by, and see that bills and record are of one meter.',
+  ),
+  'record.unlikeTotals': unusual(
+    'By the tariff the record makes {sharePct} of the real bill of {month}; {months:month differs|months differ} by more than 20 %.',
+    'See that the tariff is whole and the record in the right ratio, since every saving is reckoned with both.',
+  ),
   'site.frequencyUnusual': unusual(
     'The site is in the zone {timeZone}, where public networks run at {usualHz}, and {frequencyHz} was given.',
     'See that the frequency is the network’s; every reactance follows from it.',

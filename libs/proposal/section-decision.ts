@@ -128,11 +128,17 @@ function notCovered({ result, site }: Outcome | EstimateOutcome): string {
     say`a load of another kind`,
     say`rating of breakers and cables beyond section 7`,
   ];
+  if (switchesElsewhere(site)) parts.push(say`how capacitors elsewhere in the network are switched`);
   if (site.loads.distorting === null || site.loads.backgroundPct === null)
     parts.unshift(say`distortion, since loads or background are unknown`);
   if (result.record !== null && result.record.missing > 0)
     parts.push(say`${formatNumber(result.record.missing, 'whole')} intervals missing from the record`);
   return parts.join('; ');
+}
+
+// They are judged at every number of stages that may be in; over the year their controllers are not simulated.
+function switchesElsewhere({ topology }: BankOutcome['site']): boolean {
+  return topology !== null && (topology.banks.length > 0 || topology.capacitors.some(({ switched }) => switched));
 }
 
 /** Deciding figures, label and value. */

@@ -175,12 +175,12 @@ function drawDuties(paper: Paper, outcome: BankOutcome): void {
 
 const LEVEL_COLUMNS: Column[] = words([
   { head: 'level, kvar', share: 14, align: 'right' },
-  { head: 'case', share: 11 },
+  { head: 'case', share: 16 },
   { head: 'peak at order', share: 17, align: 'right' },
   { head: 'peak, Ω', share: 12, align: 'right' },
-  { head: 'THD of voltage, %', share: 22, align: 'right' },
-  { head: 'TDD of current, %', share: 22, align: 'right' },
-  { head: 'fault level, C, L, damping', share: 43 },
+  { head: 'THD of voltage, %', share: 20, align: 'right' },
+  { head: 'TDD of current, %', share: 21, align: 'right' },
+  { head: 'fault level, C, L, damping', share: 41 },
 ]);
 
 function drawLevels(paper: Paper, outcome: BankOutcome): void {

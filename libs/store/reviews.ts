@@ -5,6 +5,7 @@ import { afterEvent, newReview, type Review, type ReviewState, reviewOf } from '
 import { appendEvent, entriesOf, eventOf } from './audit-log.js';
 import { ReviewStanding } from './review-standing.js';
 import type { Revision } from './revision.js';
+import { StaleVersion } from './stale-version.js';
 
 /** A review with the version a client's If-Match is held against. */
 export interface VersionedReview {
@@ -51,7 +52,7 @@ export async function carryOut(manager: EntityManager, revision: Numbered, asked
   const { by, act, now, seen } = asked;
   const standing = await beginStanding(manager, revision.id);
   const stale = seen !== null && seen !== standing.version;
-  if (stale) throw changedMeanwhile(standing.version, seen);
+  if (stale) throw new StaleVersion(seen, standing.version);
   const review = reviewOf((await entriesOf(manager, revision.id)).map(eventOf));
   const problems = refusals(review, asked);
   if (problems.length > 0) throw new InputProblem(problems);
@@ -63,7 +64,7 @@ export async function carryOut(manager: EntityManager, revision: Numbered, asked
     { revisionId: revision.id, version: standing.version },
     { state: after.state, version: standing.version + 1, lastSequence: sequence },
   );
-  if (affected !== 1) throw changedMeanwhile(standing.version + 1, standing.version);
+  if (affected !== 1) throw new StaleVersion(standing.version, standing.version + 1);
   return { review: after, version: standing.version + 1 };
 }
 
@@ -76,8 +77,4 @@ async function beginStanding(manager: EntityManager, revisionId: string): Promis
   // Held until the write ends, so that two acts on one revision take turns.
   const lock = isPostgres ? { lock: { mode: 'pessimistic_write' as const } } : {};
   return manager.findOneOrFail(ReviewStanding, { where: { revisionId }, ...lock });
-}
-
-function changedMeanwhile(current: number, seen: number): InputProblem {
-  return new InputProblem([{ code: 'stale', expected: `version ${current}`, found: `version ${seen}` }]);
 }

@@ -1,5 +1,6 @@
 import type { EntityManager } from 'typeorm';
 import type { ReviewState } from '#libs/review/review.js';
+import { askedPaperOf, paperFormOf } from './paper-form.js';
 import { ProposalFile } from './proposal-file.js';
 import { ReviewStanding } from './review-standing.js';
 import { Revision } from './revision.js';
@@ -43,18 +44,23 @@ export type RevisionKey = Pick<Revision, 'siteId' | 'contentHash' | 'paperForm'>
  * same inputs make the next one.
  * @returns the latest, null where there is none
  */
-export function standingRevision(
+export async function standingRevision(
   manager: EntityManager,
   { siteId, contentHash, paperForm }: RevisionKey,
 ): Promise<Revision | null> {
-  return manager
+  const standing = await manager
     .createQueryBuilder(Revision, 'revision')
     .leftJoin(ReviewStanding, 'standing', 'standing.revisionId = revision.id')
     .where('revision.siteId = :siteId AND revision.contentHash = :contentHash', { siteId, contentHash })
-    .andWhere(paperForm === null ? 'revision.paperForm IS NULL' : 'revision.paperForm = :paperForm', { paperForm })
     .andWhere("(standing.state IS NULL OR standing.state NOT IN ('withdrawn', 'superseded'))")
     .orderBy('revision.revision', 'DESC')
-    .getOne();
+    .getMany();
+  for (const revision of standing) {
+    // Revisions from before their paper's form was kept have none, whatever it was: the job that made them knows.
+    const form = revision.paperForm ?? paperFormOf(await askedPaperOf(manager, revision));
+    if (form === paperForm) return revision;
+  }
+  return null;
 }
 
 /**

@@ -53,7 +53,7 @@ describe('exports over HTTP', () => {
     expect(status).toBe(200);
     expect(headers.get('content-disposition')).toBe(`attachment; filename="site.${form}"`);
     const path = form === 'json' ? '/api/sites' : '/api/site-imports';
-    const type = { json: 'application/json', csv: 'text/csv', xlsx: 'application/octet-stream' }[form]!;
+    const type = { json: 'application/json', csv: 'text/csv', xlsx: headers.get('content-type')! }[form]!;
     const answer = await imported(path, bytes, type);
     expect(answer.status).toBe(201);
     const { site } = (await answer.json()) as { site: unknown };

@@ -54,6 +54,32 @@ describe('a bank judged again over HTTP', () => {
     expect((await server.ask('GET', `${site}/revisions`)).body.revisions).toHaveLength(1);
   });
 
+  it('says what to do at once in the result of a bank that is over a limit, and nothing of one that is planned', async () => {
+    const bank = { stages: [{ ...STAGE, ratedV: 440, reactorPct: 0 }], installed: true };
+    const loads = {
+      distorting: [{ name: 'furnace', fundamentalA: 400, spectrum: 'six-pulse-no-choke' }],
+      backgroundPct: [],
+    };
+    const results = [];
+    for (const installed of [true, false]) {
+      const made = await server.ask('POST', '/api/sites', siteFile({ loads, bank: { ...bank, installed } }));
+      const site = `/api/sites/${made.body.id}`;
+      await server.upload(made.body.id, meterFile());
+      expect((await server.ask('POST', `${site}/assessments?wait=60`, {})).status).toBe(201);
+      const { result } = (await server.ask('GET', `${site}/revisions/1`)).body;
+      expect(result.verdict).toBe('avoid');
+      if (installed) {
+        const again = (await server.ask('GET', `${site}/revisions/1/reevaluation`)).body;
+        expect(again.tonight).toEqual(result.tonight.sentences);
+        expect(again.result.tonight).toEqual(result.tonight);
+        const text = squeezed(textOf((await server.ask('GET', `${site}/revisions/1/proposal.pdf`)).body));
+        for (const sentence of result.tonight.sentences) expect(text).toContain(squeezed(sentence));
+      }
+      results.push(result.tonight);
+    }
+    expect(results).toEqual([expect.objectContaining({ until: expect.any(Array) }), null]);
+  });
+
   it('is refused for a site without a bank, and for a revision that is not there', async () => {
     const { id } = (await server.ask('POST', '/api/sites', siteFile({ bank: undefined }))).body;
     await server.upload(id, meterFile());

@@ -28,12 +28,8 @@ for (const { name, available, create } of usualDatabases) {
       return server.ask('POST', at(revision, `/review/${what}`), body, { 'if-match': version });
     };
     const verify = async (bytes: Uint8Array) => {
-      const type = { 'content-type': 'application/pdf' };
-      const sent = await fetch(`${server.base}/api/verify`, {
-        method: 'POST',
-        body: Buffer.from(bytes),
-        headers: type,
-      });
+      const headers = { 'content-type': 'application/pdf' };
+      const sent = await fetch(`${server.base}/api/verify`, { method: 'POST', body: Buffer.from(bytes), headers });
       return (await sent.json()) as { standing: string; signedAfterwards: boolean; text: string };
     };
     const listed = async () =>
@@ -80,6 +76,7 @@ for (const { name, available, create } of usualDatabases) {
       expect((await server.ask('POST', at(1, '/review/submit'), {})).status).toBe(428);
       const { status, body } = await act(1, 'submit', {}, '"7"');
       expect([status, body.code, body.detail]).toEqual([412, 'stale', 'expected version 1, found version 7']);
+      expect(body.versions).toEqual({ seen: 7, current: 1 });
     });
 
     it('is refused to whoever prepared the plan, then allowed by the administrator, and says so', async () => {

@@ -2,7 +2,7 @@
 import { readFileSync } from 'node:fs';
 import { join } from 'node:path';
 import { afterEach, beforeAll, beforeEach, describe, expect, it } from 'vitest';
-import { textOf } from '../support/pdf-text.js';
+import { squeezed, textOf } from '../support/pdf-text.js';
 import { buildProgram, meterCsv, site, Workplace } from './cli-program.js';
 
 beforeAll(buildProgram, 120_000);
@@ -57,6 +57,12 @@ describe('assess --before', () => {
     expect(code).toBe(6);
     expect(stdout.split('\n')[1]).toMatch(/^! Tonight: keep out /);
     const text = textOf(readFileSync(pdf));
+    const { tonight, verdict } = JSON.parse(work.run(['assess', now({ loads }), '--load', load(), '--json']).stdout);
+    expect([verdict, tonight.within.out]).toEqual(['avoid', [tonight.within.stagesOut]]);
+    for (const sentence of tonight.sentences) {
+      expect(squeezed(text)).toContain(squeezed(sentence));
+      expect(squeezed(stdout)).toContain(squeezed(sentence));
+    }
     const places = ['Tonight: keep out', 'not to stay in service as it stands', 'page 2 of'].map((one) =>
       text.indexOf(one),
     );

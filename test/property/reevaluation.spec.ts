@@ -23,6 +23,14 @@ const DRIVES: NonNullable<Site['loads']> = {
   distorting: [{ name: 'drives', fundamentalA: 260, spectrum: 'six-pulse-choke' }],
   backgroundPct: [{ orderH: 5, pct: 1 }],
 };
+const STRONG: NonNullable<Site['loads']> = {
+  distorting: [{ name: 'drives', fundamentalA: 160, spectrum: 'six-pulse-choke' }],
+  backgroundPct: [{ orderH: 5, pct: 3 }],
+};
+const WEAK: NonNullable<Site['loads']> = {
+  distorting: [{ name: 'drives', fundamentalA: 40, spectrum: 'six-pulse-choke' }],
+  backgroundPct: [{ orderH: 5, pct: 1 }],
+};
 const TUNED: BankInput = { stages: [{ count: 5, ratedKvar: 50, ratedV: 525, reactorPct: 7 }], installed: true };
 const PLAIN: BankInput = { stages: [{ count: 4, ratedKvar: 50, ratedV: 440 }], installed: true };
 
@@ -101,10 +109,10 @@ describe('a bank judged again', () => {
   it('says the same first where it is judged by itself, and nothing where it is within limits', () => {
     const now = then({ bank: PLAIN, loads: DRIVES });
     const { reevaluation } = reevaluateBank(then({ bank: PLAIN, loads: { distorting: [], backgroundPct: [] } }), now);
-    const alone = bankTonight(now.site, now.record, now.zone);
+    const alone = bankTonight(assessBank(now.site, now.record, now.zone), now.site);
     expect(alone).toEqual({ tonight: reevaluation.tonight, stages: reevaluation.stages });
     const { site, record, zone } = then({ bank: TUNED, loads: DRIVES });
-    expect(tonightSentences(bankTonight(site, record, zone))).toEqual([]);
+    expect(tonightSentences(bankTonight(assessBank(site, record, zone), site))).toEqual([]);
   });
 
   it('does not lay to age what is over its limit as it stands', () => {
@@ -114,6 +122,33 @@ describe('a bank judged again', () => {
     };
     expect(said(DRIVES)).toContain('limit.exceeded');
     expect(said(DRIVES)).not.toContain('ageing.overLimit');
+  });
+
+  it('tells the limit that age passes where another is passed already', () => {
+    const judged = (dischargeOhm: number) => {
+      const bank = { stages: [{ ...TUNED.stages[0]!, reactorPct: 5.67, dischargeOhm }], installed: true };
+      const { site, record, zone } = then({ bank, loads: STRONG });
+      return assessBank(site, record, zone).result;
+    };
+    const [sound, over] = [judged(10_000), judged(10_000_000)];
+    const aged = sound.reasons.filter(({ code }) => code === 'ageing.overLimit');
+    expect([sound.verdict, aged.map(({ values }) => values.duty)]).toEqual([
+      'clear',
+      ['capacitor current', 'capacitor current'],
+    ]);
+    expect(over.duties.filter(({ verdict }) => verdict === 'avoid').map(({ name }) => name)).toEqual(['discharge']);
+    expect(over.reasons.filter(({ code }) => code === 'ageing.overLimit')).toEqual(aged);
+  });
+
+  it('keeps stages out by the nameplate where what was measured is within limits', () => {
+    const low = (stage: number) => ({ stage, date: '2025-05-01', terminalUf: UF, connection: 'delta' as const });
+    const judged = (measurements: ReturnType<typeof low>[]) => {
+      const bank = { stages: [{ ...PLAIN.stages[0]!, count: 1, measurements }], installed: true };
+      const { site, record, zone } = then({ bank, loads: WEAK });
+      return { tonight: bankTonight(assessBank(site, record, zone), site).tonight };
+    };
+    expect(judged([]).tonight).not.toBeNull();
+    expect(judged([low(1)])).toEqual(judged([]));
   });
 });
 

@@ -1,11 +1,18 @@
 // Inputs that look like a slip are findings to be accepted and no part of the verdict; each with a control just within.
 import { describe, expect, it } from 'vitest';
-import type { Site } from '#libs/engine/index.js';
+import { assessBank, type Site, UTC_TABLE } from '#libs/engine/index.js';
 import { assessedSite, BANK, LOADS, RECORD, reasonCodes } from '../support/assessed-site.js';
+import { chance } from '../support/chance.js';
+import { driftingLoad, madeRecord } from '../support/made-record.js';
+import { madeSite } from '../support/made-site.js';
+import { SEED } from '../support/soak.js';
 
 const codes = (parts: Partial<Site>) => reasonCodes(assessedSite(parts)).filter((code) => UNUSUAL.has(code));
 const UNUSUAL = new Set([
   'target.unusual',
+  'target.belowTariff',
+  'record.unlikeBills',
+  'record.unlikeTotals',
   'site.frequencyUnusual',
   'site.rulesUnusual',
   'bank.ratedVoltageUnusual',
@@ -61,6 +68,41 @@ describe('inputs unlike what is built or agreed', () => {
     expect([...ratio(LOAD_A / 1.19), ...ratio(LOAD_A * 9.9), ...ratio(LOAD_A / 1.21, 'bank')]).toEqual([]);
   });
 
+  it('are told for a target that the tariff charges for', () => {
+    const charged = (powerFactor: number) =>
+      codes({ target: { powerFactor }, tariff: { clauses: [KVARH] }, control: {} });
+    // a ratio of 0.5 is 0.8944
+    expect(charged(0.885)).toEqual(['target.belowTariff']);
+    expect([...charged(0.89), ...charged(0.95)]).toEqual([]);
+  });
+
+  it('are told for a record and bills that differ, where a month is there to compare', () => {
+    const year = madeRecord({ ...driftingLoad(chance(SEED), 60 * 8, 300, 0.9), intervalS: 10_800 });
+    const judged = (parts: Partial<Site>, record = year) => {
+      const site = madeSite({ bank: BANK, loads: LOADS, ...parts });
+      return assessBank(site, record, UTC_TABLE).result;
+    };
+    const first = judged({}).requirement.months.find((_, m) => m === 1)!;
+    const bill = (factor: number, month = first.month) => {
+      const { activeKwh, laggingKvarh } = first;
+      return { estimate: { bills: [{ month, activeKwh: activeKwh * factor, laggingKvarh, maxKw: first.maxKw }] } };
+    };
+    const told = (parts: Partial<Site>, record = year) =>
+      reasonCodes(judged(parts, record)).filter((code) => UNUSUAL.has(code));
+    expect(told(bill(0.95))).toEqual(['record.unlikeBills']);
+    expect(told(bill(1.06))).toEqual(['record.unlikeBills']);
+    expect([...told(bill(0.96)), ...told(bill(1.04))]).toEqual([]);
+    // a month the record has only a part of says nothing
+    expect(told(bill(0.5, '2031-01'))).toEqual([]);
+    expect(reasonCodes(assessedSite(bill(0.5))).filter((code) => UNUSUAL.has(code))).toEqual([]);
+    const energy = { name: 'energy', kind: 'energy' as const, pricePerUnit: 0.1 };
+    const billed = (total: number) => ({
+      tariff: { clauses: [energy], billed: [{ month: first.month, total }] },
+    });
+    expect(told(billed(0.1 * first.activeKwh * 0.8))).toEqual(['record.unlikeTotals']);
+    expect([...told(billed(0.1 * first.activeKwh * 0.85)), ...told(billed(0.1 * first.activeKwh * 1.2))]).toEqual([]);
+  });
+
   it('leave the verdict as it is', () => {
     const unusual = assessedSite({ control: { currentTransformer: { ratioPrimaryA: 1, ratioSecondaryA: 5 } } });
     const fitting = assessedSite({ control: { currentTransformer: { ratioPrimaryA: LOAD_A, ratioSecondaryA: 5 } } });
@@ -68,6 +110,8 @@ describe('inputs unlike what is built or agreed', () => {
     expect(unusual.duties).toEqual(fitting.duties);
   });
 });
+
+const KVARH = { name: 'kvarh', kind: 'kvarhBeyondRatio' as const, freeRatio: 0.5, pricePerUnit: 0.01 };
 
 const SUPPLY: Site['supply'] = {
   faultLevelMva: { max: 250, min: 180 },

@@ -10,8 +10,8 @@ export interface PlantedFault {
   site?: (site: Typed) => void;
   rows?: (rows: Row[]) => Row[];
   header?: string;
-  /** code of the finding, or code and path of the refusal, that names the matter; null where nothing in the job tells the slip */
-  code: string | null;
+  /** code of the finding, or code and path of the refusal, that names the matter */
+  code: string;
 }
 
 /** A line of the meter file. */
@@ -29,11 +29,19 @@ export const DEMO_ROWS: readonly Row[] = [...demoLoad()].slice(1).map((line) => 
   return { stamp: stamp!, kw: Number(kw), kvar: Number(kvar) };
 });
 
-/** The example with a bank that is within its limits, its current transformer and its resistors entered. */
+/** The kWh of two months, to the whole number that a bill prints. */
+const BILLS = ['2025-01', '2025-07'].map((month) => {
+  const rows = DEMO_ROWS.filter(({ stamp }) => stamp.startsWith(month));
+  const kwh = (of: 'kw' | 'kvar') => Math.round(rows.reduce((sum, row) => sum + row[of] / 4, 0));
+  return { month, activeKwh: kwh('kw'), laggingKvarh: kwh('kvar'), maxKw: Math.max(...rows.map(({ kw }) => kw)) };
+});
+
+/** The example with a bank that is within its limits, its current transformer, its resistors and two bills entered. */
 export function soundSite(): Typed {
   return structuredClone({
     ...DEMO_SITE,
     asOf: '2026-01-31',
+    estimate: { bills: BILLS },
     bank: {
       stages: [
         { count: 1, ratedKvar: 25, ratedV: 480, reactorPct: 7, dischargeOhm: 120_000, reactorMaxA: 60 },
@@ -116,6 +124,10 @@ export const PLANTED: readonly PlantedFault[] = [
     site: (site) => (site.control.currentTransformer.ratioPrimaryA = 150),
     code: 'currentTransformer.unusual',
   },
-  { what: 'the meter’s ratio taken once and a half', rows: scaled(1.5), code: null },
-  { what: 'the target of another tariff, 0.90', site: (site) => (site.target.powerFactor = 0.9), code: null },
+  { what: 'the meter’s ratio taken once and a half', rows: scaled(1.5), code: 'record.unlikeBills' },
+  {
+    what: 'the target of another tariff, 0.90',
+    site: (site) => (site.target.powerFactor = 0.9),
+    code: 'target.belowTariff',
+  },
 ];

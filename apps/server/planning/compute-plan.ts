@@ -23,6 +23,7 @@ import { portWatch } from '#libs/jobs/pool/port-watch.js';
 import { packAnswer, type WorkerAnswer } from '#libs/jobs/pool/worker-answer.js';
 import { bankName, estimateWords, proposedWords } from '#libs/present/proposed-words.js';
 import { putEstimateInWords, putInWords } from '#libs/present/put-in-words.js';
+import { withTonight } from '#libs/present/tonight-words.js';
 import type { ProposalFrame } from '#libs/proposal/proposal-frame.js';
 import { renderProposal } from '#libs/proposal/render-proposal.js';
 import type { RivalSummary } from '#libs/store/revision.js';
@@ -56,9 +57,9 @@ export function computePlan({ task, port }: { task: PlanTask; port: MessagePort 
     const { record } = task;
     const outcome = record === null ? byEstimate(task) : byRecord(task, record, portWatch(port));
     // A bank that stands there and is over a limit comes with what to do at once; such a paper stays a draft.
-    const tonight = task.kind === 'assess' ? installedTonight(task.site, task.record, task.zone) : null;
+    const tonight = installedTonight(outcome, task.site);
     return {
-      result: outcome.result,
+      result: isEstimate(outcome) || task.kind === 'plan' ? outcome.result : withTonight(outcome.result, tonight),
       proposed: isEstimate(outcome) ? estimateWords(outcome) : proposedWords(outcome),
       rival: rivalSummary(outcome),
       proposal: await renderProposal(outcome, { ...task.frame, tonight }),

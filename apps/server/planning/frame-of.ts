@@ -1,6 +1,5 @@
-import { createHash } from 'node:crypto';
 import type { ProposalFrame } from '#libs/proposal/proposal-frame.js';
-import { Job } from '#libs/store/job.js';
+import { askedPaperOf } from '#libs/store/paper-form.js';
 import type { Revision } from '#libs/store/revision.js';
 import type { Store } from '#libs/store/store.js';
 import type { FrozenPlan } from './plan-request.js';
@@ -29,8 +28,11 @@ export async function frameOf(store: Store, framed: Framed): Promise<ProposalFra
 /** What the paper looks like, so far as it was asked for. */
 type Sheet = Pick<ProposalFrame, 'paper' | 'language' | 'logo'>;
 
+/** The same, as a request names them. */
+type AskedSheet = Pick<FrozenPlan, 'paper' | 'language' | 'logo'>;
+
 /** Sheet, language and logo, where they were asked for. */
-export function sheetOf({ paper, language, logo }: Pick<FrozenPlan, 'paper' | 'language' | 'logo'>): Sheet {
+export function sheetOf({ paper, language, logo }: AskedSheet): Sheet {
   return {
     ...(paper === undefined ? {} : { paper }),
     ...(language === undefined ? {} : { language }),
@@ -38,33 +40,9 @@ export function sheetOf({ paper, language, logo }: Pick<FrozenPlan, 'paper' | 'l
   };
 }
 
-/**
- * By what papers of equal inputs differ.
- * @returns "Letter de logo 1f2e3d4c5b6a7980"; null on A4 in English without a logo
- */
-export function paperFormOf({ paper, language, logo }: Pick<FrozenPlan, 'paper' | 'language' | 'logo'>): string | null {
-  const parts = [
-    ...(paper === undefined || paper === 'A4' ? [] : [paper]),
-    ...(language === undefined || language === 'en' ? [] : [language]),
-    ...(logo === undefined ? [] : [`logo ${createHash('sha256').update(logo).digest('hex').slice(0, 16)}`]),
-  ];
-  return parts.length === 0 ? null : parts.join(' ');
-}
-
 /** Sheet, language and logo a stored revision was asked for with, as they were asked for. */
-export async function askedSheetOf(
-  store: Store,
-  { siteId, revision, kind }: Revision,
-): Promise<Pick<FrozenPlan, 'paper' | 'language' | 'logo'>> {
-  const made = { siteId, revision, kind };
-  const job = await store.read((manager) => manager.findOne(Job, { where: made, order: { id: 'ASC' } }));
-  if (job === null) return {};
-  const { paper, language, logo } = job.request as FrozenPlan;
-  return {
-    ...(paper === undefined ? {} : { paper }),
-    ...(language === undefined ? {} : { language }),
-    ...(logo === undefined ? {} : { logo }),
-  };
+export async function askedSheetOf(store: Store, revision: Revision): Promise<AskedSheet> {
+  return (await store.read((manager) => askedPaperOf(manager, revision))) as AskedSheet;
 }
 
 /** The same, as a paper's frame takes it. */

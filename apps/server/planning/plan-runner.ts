@@ -4,6 +4,7 @@ import type { Hands, Runner } from '#libs/jobs/in-process-jobs.js';
 import type { WorkerPool } from '#libs/jobs/pool/worker-pool.js';
 import type { Job } from '#libs/store/job.js';
 import { finishJob } from '#libs/store/jobs.js';
+import { paperFormOf } from '#libs/store/paper-form.js';
 import { frozenMark } from '#libs/store/plan-hash.js';
 import { readRecord } from '#libs/store/records.js';
 import { type AskedAct, carryOut } from '#libs/store/reviews.js';
@@ -13,7 +14,7 @@ import { noSite } from '#libs/store/sites.js';
 import type { Store } from '#libs/store/store.js';
 import { StoredSite } from '#libs/store/stored-site.js';
 import type { PlanTask, PlanValue } from './compute-plan.js';
-import { frameOf, paperFormOf, sheetOf } from './frame-of.js';
+import { frameOf, sheetOf } from './frame-of.js';
 import type { FrozenPlan } from './plan-request.js';
 import { contentOf } from './planning.js';
 

@@ -7,9 +7,10 @@ import type { PlanRequest } from '#libs/contract/plan-request-schema.js';
 import { zoneTableOf } from '#libs/contract/time-zone.js';
 import { ENGINE_VERSION, InputProblem } from '#libs/engine/index.js';
 import type { Jobs } from '#libs/jobs/jobs.js';
-import type { Person } from '#libs/review/review-act.js';
 import { readLogo } from '#libs/proposal/read-logo.js';
+import type { Person } from '#libs/review/review-act.js';
 import type { Job } from '#libs/store/job.js';
+import { paperFormOf } from '#libs/store/paper-form.js';
 import type { Revision } from '#libs/store/revision.js';
 import { standingRevision } from '#libs/store/revisions.js';
 import { Store } from '#libs/store/store.js';
@@ -18,7 +19,6 @@ import type { StoredSite } from '#libs/store/stored-site.js';
 import { siteWithPapers } from '../papers/site-with-papers.js';
 import { findRecord } from '../records/find-record.js';
 import { JOBS } from '../tokens.js';
-import { paperFormOf } from './frame-of.js';
 import type { FrozenPlan } from './plan-request.js';
 
 /** Freezes what a plan is made from and hands it to the jobs. */

@@ -16,7 +16,7 @@ import { packAnswer, type WorkerAnswer } from '#libs/jobs/pool/worker-answer.js'
 import type { Language } from '#libs/present/languages.js';
 import { putInWords } from '#libs/present/put-in-words.js';
 import { sinceSentences } from '#libs/present/reevaluation-words.js';
-import { tonightSentences } from '#libs/present/tonight-words.js';
+import { tonightSentences, withTonight } from '#libs/present/tonight-words.js';
 import { renderProposal } from '#libs/proposal/render-proposal.js';
 import { recordHash } from '../planning/read-file.js';
 
@@ -50,7 +50,7 @@ export function computeReevaluation({
       reevaluation,
       tonight: tonightSentences(reevaluation),
       since: sinceSentences(reevaluation),
-      result: putInWords(after.result),
+      result: withTonight(putInWords(after.result), reevaluation),
     };
   });
 }

@@ -3,6 +3,7 @@ import { bankLevels } from '../layout/levels.js';
 import { deltaCapacitanceUf, tunedOrderH } from '../layout/stage.js';
 import type { NetworkModel } from '../network/network-model.js';
 import { InputProblem } from '../problem.js';
+import type { Duty } from './duty-row.js';
 import { type JudgeBasis, judgeBank } from './judge-bank.js';
 import { firmVerdict, quickJudge } from './quick-judge.js';
 import { graver, type Verdict } from './rules.js';
@@ -22,6 +23,8 @@ export interface AgedCase {
   tunedOrderH: number | null;
   /** null where there are too many combinations to judge */
   verdict: Verdict | null;
+  /** duties over a limit, by the bank's own groups */
+  exceeded: { name: string; group: number | null }[];
 }
 
 /** The capacitance at which a stage must come out. */
@@ -82,13 +85,13 @@ export function ageing(
   const cases: AgedCase[] = [
     {
       ...described(all.bank, null, { frequencyHz, factor: all.factor, from: all.from }),
-      verdict: judgeBank(model, all.bank, levels, basis).verdict,
+      ...judgedAged(judgeBank(model, all.bank, levels, basis), bank, null),
     },
   ];
   for (const [g, { factor, from: how }] of left.entries()) {
     const alone = aged(bank, g, factor);
-    const verdict = ofStages(() => firmVerdict(model, alone, basis).verdict);
-    cases.push({ ...described(alone, g, { frequencyHz, factor, from: how }), verdict });
+    const judgement = ofStages(() => firmVerdict(model, alone, basis));
+    cases.push({ ...described(alone, g, { frequencyHz, factor, from: how }), ...judgedAged(judgement, bank, g) });
   }
   // The search for a stage's end asks too often to look for peaks of |Z| as well.
   const verdictOf = (one: Bank): Verdict | null => ofStages(() => quickJudge(model, one, basis).verdict);
@@ -131,7 +134,7 @@ function described(
   bank: Bank,
   group: number | null,
   { frequencyHz, factor, from }: { frequencyHz: number; factor: number; from: AgedCase['from'] },
-): Omit<AgedCase, 'verdict'> {
+): Omit<AgedCase, 'verdict' | 'exceeded'> {
   const stages = group === null ? bank.groups : [bank.groups[bank.groups.length - 1]!];
   const ratios = new Set(stages.map(({ reactorPct }) => reactorPct));
   const reactorPct = ratios.size === 1 ? stages[0]!.reactorPct : null;
@@ -161,8 +164,24 @@ export function aged(bank: Bank, group: number | null, factor: number): Bank {
   return { ...bank, groups: [...rest, { ...agedGroup(bank.groups[group]!, factor), count: 1 }] };
 }
 
+/** What a judgement of an aged bank says, its groups those of the bank as it was. */
+function judgedAged(
+  judgement: { verdict: Verdict; duties: Duty[] } | null,
+  bank: Bank,
+  group: number | null,
+): Pick<AgedCase, 'verdict' | 'exceeded'> {
+  if (judgement === null) return { verdict: null, exceeded: [] };
+  const entries = bank.groups.flatMap(({ count }, g) => (g === group && count === 1 ? [] : [g]));
+  const ofGroup = group === null ? entries : [...entries, group];
+  const over = judgement.duties.filter(({ verdict }) => verdict === 'avoid');
+  const named = over.map(({ name, group: g }) => ({ name, group: g === null ? null : ofGroup[g]! }));
+  const isFirst = (one: AgedCase['exceeded'][0], k: number): boolean =>
+    named.findIndex(({ name, group: g }) => name === one.name && g === one.group) === k;
+  return { verdict: judgement.verdict, exceeded: named.filter(isFirst) };
+}
+
 // An aged stage is a group of its own, and may make too many combinations.
-function ofStages(judged: () => Verdict): Verdict | null {
+function ofStages<Said>(judged: () => Said): Said | null {
   try {
     return judged();
   } catch (error) {

@@ -13,8 +13,8 @@ import type { Outcome } from './outcome.js';
 import { reasons } from './reasons.js';
 import { copyNote, pointAssumption, reasonsBeside, verdictBeside } from './reasons-beside.js';
 import type { Result } from './result.js';
-import { rangeOf } from './turned-range.js';
 import { type Operated, operate, type Study } from './study.js';
+import { rangeOf } from './turned-range.js';
 import { unusualRecord, unusualSite } from './unusual-inputs.js';
 import type { WaysWeighed } from './weighed-bank.js';
 
@@ -53,6 +53,7 @@ export function outcomeOf(kind: Outcome['kind'], study: Study, choice: Choice): 
   const judged = judgeWhole(choice.isOwn === true ? 'assess' : kind, study, choice);
   const { levels, judgement, beside, equipment } = judged;
   const range = rangeOf(study, choice);
+  const money = choice.money?.(operated) ?? null;
   const result: Result = {
     record: study.recordSummary,
     recordedBank: range.summary,
@@ -69,7 +70,7 @@ export function outcomeOf(kind: Outcome['kind'], study: Study, choice: Choice): 
     robustness: null,
     reactorTrials: [],
     spareWays: [],
-    money: choice.money?.(operated) ?? null,
+    money,
     verdict: [said.atBest ?? 'clear', supported(study), range.atBest, verdictBeside(beside)].reduce(
       graver,
       overallVerdict(study, judgement),
@@ -79,7 +80,7 @@ export function outcomeOf(kind: Outcome['kind'], study: Study, choice: Choice): 
       ...range.reasons,
       ...reasons(study, bank, operated, judgement),
       ...unusualSite(study.site, bank),
-      ...unusualRecord(study, bank),
+      ...unusualRecord(study, bank, money?.bills.before ?? null),
       ...reasonsBeside(study, bank, { control, duties: judgement.duties }, beside),
     ],
     assumptions: [

@@ -128,19 +128,22 @@ function ageingReasons({ cases, stages }: Ageing, duties: readonly Duty[]): Rema
       ),
     ];
   });
-  // Where a limit is passed as the bank stands, age is not what passes it.
-  return duties.some(({ verdict }) => verdict === 'avoid') ? due : [...due, ...limitReasons(cases)];
+  return [...due, ...limitReasons(cases, duties)];
 }
 
-function limitReasons(cases: Ageing['cases']): Remark[] {
-  return cases
-    .filter(({ verdict }) => verdict === 'avoid')
-    .map(({ group, capacitanceFactor, tunedOrderH }) => {
-      const values: Record<string, number | string> = { leftPct: 100 * capacitanceFactor };
-      if (group !== null) values.group = group + 1;
-      if (tunedOrderH !== null) values.tunedOrderH = tunedOrderH;
-      return remark('ageing.overLimit', values, { source: 'practice' });
-    });
+// A limit that is passed as the bank stands is not passed by age; one that joins it is.
+function limitReasons(cases: Ageing['cases'], duties: readonly Duty[]): Remark[] {
+  const already = duties.filter(({ verdict }) => verdict === 'avoid');
+  return cases.flatMap(({ group, capacitanceFactor, tunedOrderH, exceeded }) => {
+    const passed = exceeded.find((one) =>
+      already.every(({ name, group: of }) => name !== one.name || of !== one.group),
+    );
+    if (passed === undefined) return [];
+    const values: Record<string, number | string> = { leftPct: 100 * capacitanceFactor, duty: passed.name };
+    if (group !== null) values.group = group + 1;
+    if (tunedOrderH !== null) values.tunedOrderH = tunedOrderH;
+    return [remark('ageing.overLimit', values, { source: 'practice' })];
+  });
 }
 
 function loadReasons(judged: Judged, control: Control): Remark[] {

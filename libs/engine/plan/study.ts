@@ -13,6 +13,7 @@ import type { LoadRecord } from '../record/load-record.js';
 import { type RecordSummary, summarizeRecord } from '../record/record-summary.js';
 import { type MonthIndex, monthIndex, type ZoneTable } from '../record/zone-table.js';
 import { type BusLoad, busLoad, type OldBank } from '../requirement/bus-load.js';
+import type { MonthlyBill } from '../requirement/estimate-input.js';
 import { needColumn, type Target, targetKw } from '../requirement/need.js';
 import { type RequirementSummary, summarizeRequirement } from '../requirement/requirement.js';
 import { meteringOf } from './metering-of.js';
@@ -34,6 +35,8 @@ export interface Study {
   months: MonthIndex;
   recordSummary: RecordSummary;
   requirement: RequirementSummary;
+  /** bills that were typed in beside the record; empty where none were */
+  bills: readonly MonthlyBill[];
   model: NetworkModel;
   /** (U/U_nom)² per interval, or null */
   voltageScale: Float64Array | null;
@@ -73,6 +76,7 @@ export function studySite(site: Site, record: LoadRecord, zone: ZoneTable): Stud
     months,
     recordSummary: summarizeRecord(record),
     requirement: summarizeRequirement(record, needKvar, months, settled.targetPowerFactor),
+    bills: site.estimate?.bills ?? [],
     model: siteNetwork(settled.supply, settled.loads, {
       nominalV: settled.nominalV,
       loadA,

@@ -1,12 +1,17 @@
 import type { Bank } from '../layout/bank.js';
 import { effectiveKvar } from '../layout/stage.js';
+import type { Bill } from '../money/bill.js';
+import { freeFactor } from '../money/free-factor.js';
 import { type Remark, remark } from '../problem.js';
 import { unusualSupply } from '../supply/unusual-supply.js';
 import type { SettledSite } from './settled-site.js';
 import type { Study } from './study.js';
+import { unlikeBills } from './unlike-bills.js';
 
 /** Tariffs ask for 0.85 and more; a tan φ typed for a power factor lies below this. */
 const LEAST_TARGET = 0.8;
+/** Tariffs round the factor they name, or give the ratio of kvarh for it. */
+const FACTOR_ROUNDING = 0.005;
 /** A unit rated this much above the voltage across it gives less than half of its kvar. */
 const MOST_VOLTAGE_RATIO = 1.5;
 /** The loads of a list may do a little more for a moment than the record's greatest mean. */
@@ -41,7 +46,14 @@ export function unusualSite(site: SettledSite, bank: Bank): Remark[] {
     const place = { path: 'target.powerFactor', source: 'practice' };
     found.push(remark('target.unusual', { targetPowerFactor, leastPowerFactor: LEAST_TARGET }, place));
   }
-  return [...found, ...unusualFrequency(site), ...unusualVoltages(site, bank)];
+  return [...found, ...chargedTarget(site), ...unusualFrequency(site), ...unusualVoltages(site, bank)];
+}
+
+function chargedTarget({ targetPowerFactor, papers }: SettledSite): Remark[] {
+  const free = papers.tariff === null ? null : freeFactor(papers.tariff);
+  if (free === null || targetPowerFactor >= free.powerFactor - FACTOR_ROUNDING) return [];
+  const values = { targetPowerFactor, freePowerFactor: free.powerFactor, name: free.name };
+  return [remark('target.belowTariff', values, { path: 'target.powerFactor', source: 'practice' })];
 }
 
 function unusualFrequency({ frequencyHz, timeZone, rules, limits }: SettledSite): Remark[] {
@@ -71,12 +83,13 @@ function unusualVoltages({ nominalV }: SettledSite, bank: Bank): Remark[] {
  * What of a record does not go with the site, its bank and itself.
  * @param study site and record
  * @param bank the bank
+ * @param before bills as metered, by the site's tariff; null without one
  * @returns one remark a field
  * @source method-plausibility
  */
-export function unusualRecord(study: Study, bank: Bank): Remark[] {
+export function unusualRecord(study: Study, bank: Bank, before: Bill | null): Remark[] {
   const { site, recordSummary, record } = study;
-  const found: Remark[] = [];
+  const found = unlikeBills(study, before);
   const { activeKwh, laggingKvarh } = recordSummary;
   const exports = record.activeKw.some((kw) => kw < 0);
   if (!exports && laggingKvarh > activeKwh) {

@@ -25,12 +25,7 @@ export interface SiteAsMeasured {
  * @source method-ageing
  */
 export function siteAsMeasured(site: Site): SiteAsMeasured {
-  if (site.bank === undefined) {
-    throw new InputProblem([
-      { code: 'missing', path: 'bank', expected: 'the bank that stands there', found: 'nothing' },
-    ]);
-  }
-  const given = site.bank;
+  const given = bankOf(site);
   const { bank } = settleBank(given, site.frequencyHz);
   const basis = { nominalV: site.bus.nominalV, frequencyHz: site.frequencyHz, asOf: site.asOf ?? null };
   const histories = stageHistories(given, bank, basis);
@@ -52,6 +47,28 @@ export function siteAsMeasured(site: Site): SiteAsMeasured {
     ofStage: entries.map(({ ofStage }) => ofStage),
     factor: entries.map(({ factor }) => factor),
   };
+}
+
+/**
+ * The site with its bank by the nameplate, entries as they are given.
+ * @param site validated site with a `bank`
+ * @returns the same as `siteAsMeasured` gives where nothing was measured
+ * @throws InputProblem where there is no bank
+ */
+export function siteAsRated(site: Site): SiteAsMeasured {
+  const bank = bankOf(site);
+  const { stages } = bank;
+  return {
+    site: { ...site, bank: { ...bank, stages: stages.map(plate) } },
+    ofGroup: stages.map((_, g) => g),
+    ofStage: stages.map(() => null),
+    factor: stages.map(() => 1),
+  };
+}
+
+function bankOf({ bank }: Site): BankInput {
+  if (bank !== undefined) return bank;
+  throw new InputProblem([{ code: 'missing', path: 'bank', expected: 'the bank that stands there', found: 'nothing' }]);
 }
 
 function plate(stage: StageGroupInput): StageGroupInput {

@@ -1,10 +1,10 @@
 import { shortDevices, shortVerdict } from '../duty/device-row.js';
 import { assessBank } from '../plan/assess-bank.js';
+import { type EstimateOutcome, isEstimate } from '../plan/estimate-result.js';
+import type { Outcome } from '../plan/outcome.js';
 import type { Result } from '../plan/result.js';
 import type { Site } from '../plan/site.js';
-import type { LoadRecord } from '../record/load-record.js';
-import type { ZoneTable } from '../record/zone-table.js';
-import { type SiteAsMeasured, siteAsMeasured } from './site-as-measured.js';
+import { type SiteAsMeasured, siteAsMeasured, siteAsRated } from './site-as-measured.js';
 import { leastStagesOut, type StagesOut } from './stages-out.js';
 import { type Ground, groundOf } from './weigh-stages.js';
 
@@ -47,35 +47,35 @@ export interface BankTonight {
 }
 
 /**
- * What to do at once with an installed bank, judged as it measures.
+ * What to do at once with an installed bank, judged as it measures, and by its nameplate where that alone is over a limit.
+ * A bank of which nothing was measured is judged already.
+ * @param outcome the same bank on the same record, judged by its nameplate
  * @param site validated site with its bank
- * @param record the meter's record
- * @param zone the site's zone over the record
  * @returns the stages to keep out where the bank is over a limit
  * @throws InputProblem where there is no bank, or inputs contradict each other
  * @source method-reevaluation
  */
-export function bankTonight(site: Site, record: LoadRecord, zone: ZoneTable): BankTonight {
+export function bankTonight({ result, record, zone }: Outcome, site: Site): BankTonight {
   const measured = siteAsMeasured(site);
-  const { result } = assessBank(measured.site, record, zone);
-  const isOver = result.verdict === 'avoid';
-  return {
-    stages: measuredEntries(measured),
-    tonight: isOver ? tonightOf(groundOf(measured.site, record, zone), measured, result) : null,
-  };
+  const wasMeasured = measured.ofStage.some((stage) => stage !== null);
+  const now = wasMeasured ? assessBank(measured.site, record, zone).result : result;
+  if (now.verdict !== 'avoid' && result.verdict !== 'avoid')
+    return { stages: measuredEntries(measured), tonight: null };
+  const [judged, over] = now.verdict === 'avoid' ? [measured, now] : [siteAsRated(site), result];
+  return { stages: measuredEntries(judged), tonight: tonightOf(groundOf(judged.site, record, zone), judged, over) };
 }
 
 /**
  * What to do at once with the site's own bank, where it stands there and a record says what it meets.
+ * @param outcome the site's own bank as it was judged, or its estimate
  * @param site validated site
- * @param record the meter's record, null where there is none
- * @param zone the site's zone over the record
- * @returns null for a bank that is not installed, or without a record
+ * @returns null for a bank that is planned or not installed, or without a record
  * @throws InputProblem where inputs contradict each other
  * @source method-reevaluation
  */
-export function installedTonight(site: Site, record: LoadRecord | null, zone: ZoneTable): BankTonight | null {
-  return record === null || site.bank?.installed !== true ? null : bankTonight(site, record, zone);
+export function installedTonight(outcome: Outcome | EstimateOutcome, site: Site): BankTonight | null {
+  if (outcome.kind === 'plan' || isEstimate(outcome) || site.bank?.installed !== true) return null;
+  return bankTonight(outcome, site);
 }
 
 /**

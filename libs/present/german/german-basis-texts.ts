@@ -87,6 +87,8 @@ export const GERMAN_BASIS_TEXTS: Readonly<Record<string, string>> = {
   'the load within a month': 'die Last innerhalb eines Monats',
   'costs and savings': 'Kosten und Ersparnis',
   'a load of another kind': 'Lasten anderer Art',
+  'how capacitors elsewhere in the network are switched':
+    'wie Kondensatoren an anderer Stelle des Netzes geschaltet werden',
   'rating of breakers and cables beyond section 7': 'Bemessung von Schaltern und Kabeln über Abschnitt 7 hinaus',
   'distortion, since loads or background are unknown': 'Verzerrung, da Lasten oder Vorverzerrung unbekannt sind',
   '{0} intervals missing from the record': '{0} im Lastgang fehlende Intervalle',

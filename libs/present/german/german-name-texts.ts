@@ -120,10 +120,12 @@ export const GERMAN_NAME_TEXTS: Readonly<Record<string, string>> = {
   'derived: zero-sequence currents add in the neutral': 'hergeleitet: Nullströme addieren sich im Neutralleiter',
   'closed form after IEEE C37.99, an estimate': 'geschlossene Formel nach IEEE C37.99, eine Näherung',
   '{0}, group {1}': '{0}, Gruppe {1}',
+  '{0}, group\u00a0{1}': '{0}, Gruppe\u00a0{1}',
   '{0} class {1}': '{0}, Klasse {1}',
   '{0} out': '{0} außer Betrieb',
   'transformer {0} out': 'Transformator {0} außer Betrieb',
   '{0} closed': '{0} geschlossen',
   '{0} running': '{0} in Betrieb',
   '{0} with {1} stages in': '{0} mit {1} Stufen zugeschaltet',
+  '{0} with one stage in': '{0} mit einer Stufe zugeschaltet',
 };

@@ -144,7 +144,7 @@ export const GERMAN_REASON_MESSAGES: Readonly<Record<string, Translation>> = {
     '{quantity}, bei Ordnung {orderH} an {bus} gemessen, unter jedem Eckfall des Modells',
   ),
   'ageing.overLimit': said(
-    'Mit {leftPct} Restkapazität[ in einer Stufe der Gruppe {group}] überschreitet die Anlage einen Grenzwert[, abgestimmt auf Ordnung {tunedOrderH}].',
+    'Mit {leftPct} Restkapazität[ in einer Stufe der Gruppe {group}] überschreitet die Anlage einen Grenzwert[, abgestimmt auf Ordnung {tunedOrderH}]: {duty}.',
     'Die Kapazität jedes Jahr messen und eine Stufe beim gedruckten Wert außer Betrieb nehmen.',
   ),
   'ageing.takeOut': said(

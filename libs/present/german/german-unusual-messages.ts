@@ -31,6 +31,18 @@ export const GERMAN_UNUSUAL_MESSAGES: Readonly<Record<string, Translation>> = {
     'Der Zielwert des Leistungsfaktors von {targetPowerFactor} liegt unter dem, was Tarife verlangen, {leastPowerFactor} und mehr.',
     'Den Tarif nachlesen; ein tan φ ist kein Leistungsfaktor.',
   ),
+  'target.belowTariff': said(
+    'Der Zielwert des Leistungsfaktors ist {targetPowerFactor}, und der Tarif berechnet unter {freePowerFactor} die Position „{name}“.',
+    'Den Zielwert nach dem Tarif wählen oder hinnehmen, was dazwischen berechnet wird.',
+  ),
+  'record.unlikeBills': said(
+    'Die Rechnung für {month} nennt {billKwh}, der Lastgang {recordKwh}; {months:Monat weicht|Monate weichen} um mehr als 5 % ab.',
+    'Fragen, mit welcher Wandlerübersetzung die Zählerwerte multipliziert wurden, und prüfen, ob Rechnungen und Lastgang zu einem Zähler gehören.',
+  ),
+  'record.unlikeTotals': said(
+    'Nach dem Tarif ergibt der Lastgang {sharePct} der wirklichen Rechnung für {month}; {months:Monat weicht|Monate weichen} um mehr als 20 % ab.',
+    'Prüfen, ob der Tarif vollständig ist und der Lastgang die richtige Übersetzung hat, denn jede Ersparnis rechnet mit beiden.',
+  ),
   'site.frequencyUnusual': said(
     'Der Standort liegt in der Zeitzone {timeZone}, wo öffentliche Netze mit {usualHz} laufen, und {frequencyHz} wurde angegeben.',
     'Prüfen, ob die Frequenz die des Netzes ist; jede Reaktanz folgt daraus.',
