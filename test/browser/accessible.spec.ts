@@ -15,7 +15,14 @@ const LOOKS = [
 ] as const;
 
 /** What a page shows once it stands. */
-const SHOWN: Record<string, RegExp> = { ...STATIONS_SHOWN, 'reevaluation?revision=1': /What changed, in numbers/ };
+const SHOWN: Record<string, RegExp> = {
+  ...STATIONS_SHOWN,
+  '': /A new site/,
+  nowhere: /Nothing stands at this address|Varwright/,
+  papers: /^One shared paper/,
+  survey: /Look, do not open/,
+  'reevaluation?revision=1': /What changed, in numbers/,
+};
 
 describe.runIf(CHROMIUM !== null)('every page, by the automated rules of accessibility', () => {
   let open: OpenPage;
@@ -29,6 +36,9 @@ describe.runIf(CHROMIUM !== null)('every page, by the automated rules of accessi
     siteId = await openDemo(server);
     // A second revision, so that two can be compared.
     expect((await server.ask('POST', `/api/sites/${siteId}/assessments?wait=60`, {})).status).toBe(201);
+    const clause = { name: 'reactive', kind: 'kvarhBeyondRatio', freeRatio: 0.33, pricePerUnit: 0.02 };
+    const paper = { kind: 'tariff', name: 'Works tariff', date: '2025-01-01', document: { clauses: [clause] } };
+    expect((await server.ask('POST', '/api/papers', paper)).status).toBe(201);
     open = await openPage(server.base);
   });
   afterAll(async () => {
@@ -89,10 +99,10 @@ async function violationsOn(page: Page): Promise<{ id: string; html: string }[]>
 /** Opens an address and all that is folded away; where it has figures, the table and the working of the first. */
 async function unfold(page: Page, address: string): Promise<void> {
   await page.goto(address);
-  const shown = SHOWN[address.split('/').at(-1) ?? ''] ?? (address.includes('#') ? /site/i : /Varwright/);
+  const shown = SHOWN[address.split('/').at(-1)!] ?? /Varwright/;
   await page.getByText(shown).first().waitFor();
-  for (const name of ['Table', 'Working']) {
-    const toggle = page.getByRole('button', { name, exact: true }).first();
+  for (const name of [/^Table$/, /^Working$/, /^Show\b/]) {
+    const toggle = page.getByRole('button', { name }).first();
     if (await toggle.isVisible()) await toggle.click();
   }
   await page.evaluate('document.querySelectorAll("details").forEach((part) => { part.open = true; })');

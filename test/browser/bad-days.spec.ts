@@ -67,6 +67,17 @@ describe.runIf(CHROMIUM !== null)('on a bad day the page', () => {
     expect(body.site.supply.faultLevelMva.min).toBe(95);
   });
 
+  it('asks for the record again where the connection was lost before it came', async () => {
+    const { page, context } = open;
+    let isThere = false;
+    await context.route('**/columns', (route) => (isThere ? route.continue() : route.abort('internetdisconnected')));
+    await at(page, 'need');
+    await page.getByText('The record did not come. It is asked for again.').waitFor();
+    isThere = true;
+    await page.getByLabel('target power factor').first().waitFor();
+    expect(await page.getByText('The record did not come').count()).toBe(0);
+  });
+
   it('shows both versions where another window saved meanwhile, and loses neither unasked', async () => {
     const { page } = open;
     await at(page, 'supply');

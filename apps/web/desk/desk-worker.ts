@@ -4,8 +4,8 @@ import { createLoadRecord, InputProblem, type Outcome, type Site, withRobustness
 import { findings } from '#libs/present/findings.js';
 import { proposedWords } from '#libs/present/proposed-words.js';
 import { putInWords } from '#libs/present/put-in-words.js';
-import { fullLook, type Looked, quickLook } from './compute-look.js';
 import { takeReadersMark } from '../readers-mark.js';
+import { fullLook, type Looked, quickLook } from './compute-look.js';
 import type { DeskAnswered, DeskAsked, Look, LookAsked, Trace } from './look.js';
 import { stationCharts } from './station-charts.js';
 import { StudyCache } from './study-cache.js';
@@ -46,7 +46,7 @@ async function answerOf(asked: DeskAsked): Promise<DeskAnswered> {
   const { ticket } = asked;
   switch (asked.ask) {
     case 'open':
-      cache = await openRecord(asked);
+      [cache] = await Promise.all([openRecord(asked), schemas()]);
       last = null;
       memo = null;
       return { ticket, opened: true };
@@ -71,8 +71,9 @@ function opened(): StudyCache {
 }
 
 async function openRecord({ columnsUrl, summary, timeZone }: Extract<DeskAsked, { ask: 'open' }>): Promise<StudyCache> {
-  const response = await fetch(columnsUrl);
-  if (!response.ok) throw new Error(`the record could not be loaded: ${response.status}`);
+  const response = await fetch(columnsUrl).catch(() => null);
+  if (response === null) throw new Error('The record did not come. It is asked for again.');
+  if (!response.ok) throw new Error(`The record did not come (${response.status}). It is asked for again.`);
   const sent = (await response.json()) as ColumnsSent;
   const column = (values: number[] | undefined) => (values === undefined ? null : Float64Array.from(values));
   const record = createLoadRecord({
@@ -91,9 +92,11 @@ async function openRecord({ columnsUrl, summary, timeZone }: Extract<DeskAsked, 
   return new StudyCache(record, zoneTableOf(timeZone, record));
 }
 
-/** The schemas are loaded when the first site is looked at, not with the page. */
+/** The schemas come beside the record: a desk that is open needs no connection any more. */
+const schemas = () => import('#libs/contract/read-site.js');
+
 async function read({ document }: LookAsked): Promise<Site> {
-  const { readSite } = await import('#libs/contract/read-site.js');
+  const { readSite } = await schemas();
   return readSite(document);
 }
 

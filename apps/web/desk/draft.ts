@@ -1,5 +1,6 @@
 import type { BankInput } from '#libs/engine/index.js';
-import type { SiteDocument } from '../api/shown.js';
+import type { SiteDocument, SiteShown } from '../api/shown.js';
+import type { DeskState } from './desk-state.js';
 
 /** What was typed and not kept yet, so that a reload or a lost connection loses nothing. */
 export interface Draft {
@@ -12,7 +13,7 @@ export interface Draft {
 const keyOf = (siteId: string) => `varwright:draft:${siteId}`;
 
 /** @returns the draft of a site, null where there is none or it cannot be read */
-export function readDraft(siteId: string): Draft | null {
+function readDraft(siteId: string): Draft | null {
   try {
     const text = localStorage.getItem(keyOf(siteId));
     return text === null ? null : (JSON.parse(text) as Draft);
@@ -32,4 +33,12 @@ export function dropDraft(siteId: string): void {
   try {
     localStorage.removeItem(keyOf(siteId));
   } catch {}
+}
+
+/** A site as it is opened: with what was typed on it, and the other version beside it where that came meanwhile. */
+export function withDraft(site: SiteShown): Pick<DeskState, 'site' | 'document' | 'trial' | 'theirs'> {
+  const draft = readDraft(site.id);
+  if (draft === null) return { site, document: site.site, trial: null, theirs: null };
+  const { version, document, trial } = draft;
+  return { site: { ...site, version }, document, trial, theirs: version === site.version ? null : site };
 }

@@ -10,6 +10,8 @@ export interface DeskEars {
   looked(look: Look, asked: LookAsked, tookMs: number): void;
   firm(firm: Firmness, asked: LookAsked): void;
   failed(error: Error): void;
+  /** the record or the engine's own script did not come: this desk answers nothing, another is to be opened */
+  unopened(error: Error): void;
 }
 
 /**
@@ -37,7 +39,7 @@ export class EngineDesk {
     const open = { ask: 'open' as const, ...record };
     this.#open = open;
     this.#opening = Promise.all([this.#near.ask(open, 'opened'), this.#far.ask(open, 'opened')]);
-    this.#opening.catch((error: Error) => ears.failed(error));
+    this.#opening.catch((error: Error) => ears.unopened(error));
   }
 
   /**
@@ -83,11 +85,19 @@ export class EngineDesk {
   async #openThird(): Promise<DeskLink> {
     await this.#opening;
     const link = new DeskLink();
-    await link.ask(this.#open, 'opened');
+    try {
+      await link.ask(this.#open, 'opened');
+    } catch (error) {
+      link.close();
+      throw error;
+    }
     return link;
   }
 
-  /** @returns the record's own columns */
+  /**
+   * @returns the record's own columns
+   * @throws Error where they did not come
+   */
   trace(): Promise<Trace> {
     this.#traced ??= this.#opening.then(() => this.#far.ask({ ask: 'trace' }, 'trace'));
     return this.#traced;
@@ -116,13 +126,20 @@ export class EngineDesk {
   }
 
   async #lookOnce(link: DeskLink, asked: LookAsked): Promise<void> {
+    if (!(await this.#isOpen())) return;
     try {
-      await this.#opening;
       const fromMs = performance.now();
       const look = await link.ask({ ask: 'look', look: asked }, 'look');
       this.#ears.looked(look, asked, performance.now() - fromMs);
     } catch (error) {
       this.#ears.failed(error as Error);
     }
+  }
+
+  #isOpen(): Promise<boolean> {
+    return this.#opening.then(
+      () => true,
+      () => false,
+    );
   }
 }

@@ -7,7 +7,7 @@ import { paperAsked } from '../proposal/paper-language.js';
 import { clockNow } from './clock-now.js';
 import { InputRefused } from './desk-link.js';
 import { type DeskState, isChanged, lookAsked, NOTHING_YET, staleFrom, studiedDocument } from './desk-state.js';
-import { dropDraft, keepDraft, readDraft } from './draft.js';
+import { dropDraft, keepDraft, withDraft } from './draft.js';
 import { EngineDesk } from './engine-desk.js';
 import { fetchKept, saveDocument } from './fetch-kept.js';
 import { followJob, type JobEnd, keptJob } from './follow-job.js';
@@ -19,6 +19,7 @@ import { RetryLater } from './retry-later.js';
 /** Waits: for a first plan that is being made elsewhere, and before a lost connection is tried again [ms]. */
 const FIRST_PLAN_MS = 1500;
 const MEND_MS = 4000;
+
 /** Everything one site's page does: holds what is typed, asks the engine and the server, and says what came of it. */
 export class SiteDesk {
   readonly siteId: string;
@@ -50,14 +51,7 @@ export class SiteDesk {
   async open(): Promise<void> {
     try {
       const site = (await ask<SiteShown>(this.#path)).body;
-      const draft = readDraft(this.siteId);
-      const isOlder = draft !== null && draft.version !== site.version;
-      this.#set({
-        site: isOlder ? { ...site, version: draft.version } : site,
-        document: draft?.document ?? site.site,
-        trial: draft?.trial ?? null,
-        theirs: isOlder ? site : null,
-      });
+      this.#set(withDraft(site));
       await this.#refresh();
       this.#set({ stage: 'open', held: await fetchHeldPapers(this.#state.document) });
       this.#prepareEngine();
@@ -143,18 +137,16 @@ export class SiteDesk {
 
   /** Of two versions: the other window's is taken, or this one goes on, built on theirs. */
   settle(whose: 'theirs' | 'mine'): void {
-    const { theirs, document } = this.#state;
+    const { theirs } = this.#state;
     if (theirs === null) return;
     if (whose === 'theirs') dropDraft(this.siteId);
-    const own = whose === 'mine' ? document : theirs.site;
-    this.#set({ site: theirs, document: own, theirs: null, ...(whose === 'theirs' ? { trial: null, typed: {} } : {}) });
+    const taken = { document: theirs.site, trial: null, typed: {} };
+    this.#set({ site: theirs, theirs: null, ...(whose === 'theirs' ? taken : {}) });
     this.#edited();
     this.#hold();
   }
 
-  trace(): Promise<Trace> | null {
-    return this.#engine?.trace() ?? null;
-  }
+  readonly trace = (): Promise<Trace> | null => this.#engine?.trace() ?? null;
 
   async #save(kind: 'plan' | 'assess'): Promise<void> {
     const body = await saveDocument(this.#path, this.#state, kind);
@@ -170,7 +162,8 @@ export class SiteDesk {
   }
 
   #lookAgain(): void {
-    if (this.#closed || this.#state.job !== null || this.#state.kept !== null) return;
+    const { job, kept } = this.#state;
+    if (this.#closed || job !== null || kept !== null) return;
     this.#refreshThen(() => this.#state.kept !== null && this.#look(true));
   }
 
@@ -219,20 +212,32 @@ export class SiteDesk {
 
   #prepareEngine(): void {
     const record = this.#state.records[0];
-    if (record === undefined || record.id === this.#engineRecord) return;
+    if (this.#closed || record === undefined || record.id === this.#engineRecord) return;
     this.#engine?.close();
     this.#engineRecord = record.id;
-    const opened = {
-      columnsUrl: `${this.#path}/records/${record.id}/columns`,
-      summary: record.record,
-      timeZone: this.#state.site!.site.timeZone,
-    };
-    this.#engine = new EngineDesk(opened, {
-      looked: (look, asked, tookMs) => this.#looked(look, asked, tookMs),
-      firm: (firm, asked) => this.#firm(firm, asked),
-      failed: (error) => this.#failed(error),
-    });
+    const columnsUrl = `${this.#path}/records/${record.id}/columns`;
+    const { timeZone } = this.#state.site!.site;
+    this.#engine = new EngineDesk(
+      { columnsUrl, summary: record.record, timeZone },
+      {
+        looked: (look, asked, tookMs) => this.#looked(look, asked, tookMs),
+        firm: (firm, asked) => this.#firm(firm, asked),
+        failed: (error) => this.#failed(error),
+        unopened: (error) => this.#openAnew(error),
+      },
+    );
     this.#look(true);
+  }
+
+  /** The record did not come: it is asked for anew once the server answers, and its own fault said where it does. */
+  #openAnew(error: Error): void {
+    this.#engine?.close();
+    this.#engine = null;
+    this.#engineRecord = '';
+    this.#refreshThen(() => {
+      this.#failed(error);
+      this.#mending.begin();
+    });
   }
 
   #look(isFullOnly: boolean): void {
@@ -260,8 +265,7 @@ export class SiteDesk {
   }
 
   #failed(error: Error): void {
-    if (error instanceof InputRefused) this.#set({ problems: error.problems });
-    else this.#set({ fault: error.message });
+    this.#set(error instanceof InputRefused ? { problems: error.problems } : { fault: error.message });
   }
 
   async #hearSaving(error: unknown): Promise<void> {

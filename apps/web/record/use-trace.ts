@@ -12,7 +12,10 @@ export function useTrace(recordId: string | undefined): Trace | null {
   useEffect(() => {
     let isCurrent = true;
     if (recordId !== undefined && !isFound)
-      void desk.trace()?.then((trace) => isCurrent && setFound({ recordId, trace }));
+      desk.trace()?.then(
+        (trace) => isCurrent && setFound({ recordId, trace }),
+        () => undefined, // the desk says why, and opens the record anew
+      );
     return () => {
       isCurrent = false;
     };
