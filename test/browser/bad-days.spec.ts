@@ -78,6 +78,16 @@ describe.runIf(CHROMIUM !== null)('on a bad day the page', () => {
     expect(await page.getByText('The record did not come').count()).toBe(0);
   });
 
+  it('says that the server is gone though nothing was asked of it, and that it is back', async () => {
+    const { page, context } = open;
+    await at(page, 'supply');
+    await page.getByLabel('fault level, least').waitFor();
+    await context.route('**/healthz', (route) => route.abort('connectionrefused'), { times: 1 });
+    const lost = page.getByRole('alert').filter({ hasText: /^No connection since \d\d:\d\d/ });
+    await lost.waitFor();
+    await lost.waitFor({ state: 'detached' });
+  });
+
   it('shows both versions where another window saved meanwhile, and loses neither unasked', async () => {
     const { page } = open;
     await at(page, 'supply');

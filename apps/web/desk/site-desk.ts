@@ -5,6 +5,7 @@ import type { RevisionShown, SiteShown } from '../api/shown.js';
 import { withValueAt } from '../field/document-path.js';
 import { paperAsked } from '../proposal/paper-language.js';
 import { clockNow } from './clock-now.js';
+import { Connection } from './connection.js';
 import { InputRefused } from './desk-link.js';
 import { type DeskState, isChanged, lookAsked, NOTHING_YET, staleFrom, studiedDocument } from './desk-state.js';
 import { dropDraft, keepDraft, withDraft } from './draft.js';
@@ -14,11 +15,9 @@ import { followJob, type JobEnd, keptJob } from './follow-job.js';
 import { fetchHeldPapers } from './held-papers.js';
 import type { Firmness, Look, LookAsked, Picks, Trace } from './look.js';
 import { mergedLook } from './merged-look.js';
-import { RetryLater } from './retry-later.js';
 
-/** Waits: for a first plan that is being made elsewhere, and before a lost connection is tried again [ms]. */
+/** The wait for a first plan that is being made elsewhere [ms]. */
 const FIRST_PLAN_MS = 1500;
-const MEND_MS = 4000;
 
 /** Everything one site's page does: holds what is typed, asks the engine and the server, and says what came of it. */
 export class SiteDesk {
@@ -31,8 +30,11 @@ export class SiteDesk {
   #full: Look | null = null;
   #stopJob: (() => void) | null = null;
   #closed = false;
-  /** asks whether the server is back; what is typed meanwhile stays as it is */
-  readonly #mending = new RetryLater(MEND_MS, () => this.#refreshThen(() => this.#prepareEngine()));
+  /** what is typed while it is lost stays as it is */
+  readonly #connection = new Connection({
+    lost: () => this.#hear(new NoConnection('no connection')),
+    mend: () => this.#refreshThen(() => this.#prepareEngine()),
+  });
   readonly #listeners = new Set<() => void>();
 
   constructor(siteId: string) {
@@ -67,7 +69,7 @@ export class SiteDesk {
     this.#closed = true;
     this.#engine?.close();
     this.#stopJob?.();
-    this.#mending.stop();
+    this.#connection.close();
   }
 
   openStation(station: Station): void {
@@ -236,7 +238,7 @@ export class SiteDesk {
     this.#engineRecord = '';
     this.#refreshThen(() => {
       this.#failed(error);
-      this.#mending.begin();
+      this.#connection.mendLater();
     });
   }
 
@@ -280,7 +282,7 @@ export class SiteDesk {
   #hear(error: unknown): void {
     if (error instanceof NoConnection) {
       this.#set({ offlineSince: this.#state.offlineSince ?? clockNow() });
-      if (this.#state.stage === 'open') this.#mending.begin();
+      if (this.#state.stage === 'open') this.#connection.mendLater();
       return;
     }
     if (!(error instanceof Refused)) throw error;

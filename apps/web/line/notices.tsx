@@ -1,5 +1,6 @@
 import { expectedWords, pathWords } from '#libs/present/path-words.js';
 import { siteAddress, stationOfPath } from '../address.js';
+import { isChanged } from '../desk/desk-state.js';
 import { useDesk } from '../desk/use-desk.js';
 import { DifferingFields } from './differing-fields.js';
 
@@ -17,7 +18,7 @@ export function Notices() {
     <>
       {offlineSince === null ? null : (
         <p className="notice" role="alert">
-          Not saved: no connection since {offlineSince}. What you type is kept.{' '}
+          {isChanged(state) ? 'Not saved: no' : 'No'} connection since {offlineSince}. What you type is kept.{' '}
           <button type="button" className="way" onClick={() => void desk.open()}>
             Try again
           </button>
