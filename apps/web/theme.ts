@@ -4,22 +4,29 @@ import { useSyncExternalStore } from 'react';
 export type Theme = 'light' | 'dark';
 
 const KEY = 'varwright:theme';
+const MACHINE = window.matchMedia('(prefers-color-scheme: dark)');
 const listeners = new Set<() => void>();
 
 export function theme(): Theme {
   const chosen = localStorage.getItem(KEY);
   if (chosen === 'light' || chosen === 'dark') return chosen;
-  return window.matchMedia('(prefers-color-scheme: dark)').matches ? 'dark' : 'light';
+  return MACHINE.matches ? 'dark' : 'light';
 }
 
-/** Puts the theme on the page. */
-export function applyTheme(): void {
-  document.documentElement.dataset.theme = theme();
+/** Puts the theme on the page, and keeps it there where the machine's changes or another window chooses. */
+export function followTheme(): void {
+  applyTheme();
+  MACHINE.addEventListener('change', applyTheme);
+  addEventListener('storage', applyTheme);
 }
 
 export function chooseTheme(chosen: Theme): void {
   localStorage.setItem(KEY, chosen);
   applyTheme();
+}
+
+function applyTheme(): void {
+  document.documentElement.dataset.theme = theme();
   for (const listener of listeners) listener();
 }
 

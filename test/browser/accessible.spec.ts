@@ -65,6 +65,20 @@ describe.runIf(CHROMIUM !== null)('every page, by the automated rules of accessi
     expect(faults).toEqual([]);
   });
 
+  it('turns dark with the machine while it is open, and back', async () => {
+    const { page } = open;
+    await page.goto(server.base);
+    await page.getByText('A new site').waitFor();
+    for (const [colorScheme, offered] of [
+      ['dark', 'Light'],
+      ['light', 'Dark'],
+    ] as const) {
+      await page.emulateMedia({ colorScheme });
+      await page.getByRole('button', { name: offered }).waitFor();
+      expect(await page.evaluate('document.documentElement.dataset.theme')).toBe(colorScheme);
+    }
+  });
+
   it('finds a violation where there is one: a control for the rules themselves', async () => {
     const { page } = open;
     await page.goto(server.base);
