@@ -3,7 +3,7 @@ import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import type { Page } from 'playwright-core';
 import { afterAll, afterEach, beforeAll, beforeEach, describe, expect, it } from 'vitest';
-import { siteFile } from '../api/site-builder.js';
+import { meterFile, siteFile } from '../api/site-builder.js';
 import { CHROMIUM, type OpenPage, openPage } from '../support/browser.js';
 import { databases, type TestDatabase } from '../support/databases.js';
 import { minuteFile } from '../support/minute-file.js';
@@ -86,6 +86,22 @@ describe.runIf(CHROMIUM !== null)('the meter files of a record, on the page', ()
     expect([record.intervals, record.missing, record.beginS]).toEqual([20 * 96, 0, Date.UTC(2025, 2, 22) / 1000]);
     // Its drawing stands without the page being loaded anew.
     await page.getByLabel(/^The record's kW and kvar over time/).waitFor();
+  });
+
+  it('that come after a plan are planned by the next revision', async () => {
+    const { page } = open;
+    await server.upload(siteId, meterFile());
+    await server.ask('POST', `/api/sites/${siteId}/plans?wait=60`, {});
+    await page.reload();
+    await page.getByText('revision 1, draft').waitFor();
+    expect(await page.getByRole('button', { name: 'Compute and keep' }).count()).toBe(0);
+    await file(page).setInputFiles(bareFile(0, 30, () => 100));
+    await page.getByRole('button', { name: 'power in kW and kvar' }).click();
+    await page.getByText('inputs changed since revision 1').waitFor();
+    await page.getByRole('button', { name: 'Compute and keep' }).click();
+    await page.getByText('revision 2, draft').waitFor();
+    const { body } = await server.ask('GET', `/api/sites/${siteId}/revisions/2`);
+    expect([body.kind, body.recordId]).toEqual(['plan', (await records())[0].id]);
   });
 
   it('are read with kept answers where they are chosen before', async () => {

@@ -1,6 +1,6 @@
 import { type ReactNode, useEffect, useState } from 'react';
 import { type Address, STATIONS, type Station } from '../address.js';
-import { isChanged } from '../desk/desk-state.js';
+import { isChanged, staleFrom } from '../desk/desk-state.js';
 import { SiteDesk } from '../desk/site-desk.js';
 import { DeskContext, useDesk } from '../desk/use-desk.js';
 import { picksOf } from '../working/asked-figure.js';
@@ -145,12 +145,16 @@ function KeptState() {
   if (job !== null) return `computing, ${Math.round(100 * job.progress)}\u00a0% done`;
   if (saving) return 'saving';
   if (isChanged(state)) return 'changed, not kept yet';
-  return kept === null ? 'no revision yet' : `revision ${kept.revision}, ${review?.stateText ?? 'kept'}`;
+  if (kept === null) return 'no revision yet';
+  if (staleFrom(state) !== null) return `inputs changed since revision ${kept.revision}`;
+  return `revision ${kept.revision}, ${review?.stateText ?? 'kept'}`;
 }
 
 function KeepWays() {
   const { desk, state } = useDesk();
   const isBusy = state.saving || state.job !== null;
+  // A later record, or a later version of a shared paper, changes the inputs without a hand on this page.
+  const isNewToKeep = isChanged(state) || staleFrom(state) !== null;
   if (state.stage !== 'open') return null;
   return (
     <>
@@ -164,7 +168,7 @@ function KeepWays() {
           Stop
         </button>
       )}
-      {isChanged(state) && Object.keys(state.typed).length === 0 ? (
+      {isNewToKeep && Object.keys(state.typed).length === 0 ? (
         <button
           type="button"
           className="button filled"
