@@ -54,8 +54,8 @@ async function answerOf(asked: DeskAsked): Promise<DeskAnswered> {
       return { ticket, look: await look(opened(), asked.look) };
     case 'firm': {
       const { outcome } = fullLook(opened(), await read(asked.look));
-      const { assumptions, reactorTrials, robustness } = putInWords(withRobustness(outcome).result);
-      return { ticket, firm: { assumptions, reactorTrials, robustness } };
+      const { assumptions, reactorTrials, robustness, money } = putInWords(withRobustness(outcome).result);
+      return { ticket, firm: { assumptions, reactorTrials, robustness, money } };
     }
     case 'warm':
       await warmUp(opened(), asked.look);

@@ -29,7 +29,7 @@ export interface LookAsked {
 }
 
 /** How firm a verdict is: some sixty judgements, had once the hand has rested for longer. */
-export type Firmness = Pick<Result, 'assumptions' | 'reactorTrials' | 'robustness'>;
+export type Firmness = Pick<Result, 'assumptions' | 'reactorTrials' | 'robustness' | 'money'>;
 
 /** Charts of the open station; the others' are made when they are opened. */
 export interface StationCharts {

@@ -130,7 +130,7 @@ const FIGURES: Record<Station, (state: DeskState) => { figure: ReactNode; third:
     const saving = <Quantity value={headlineSaving(money)} unit={currency} digits="whole" />;
     // The money of a bank over a limit is there to compare, and is no offer.
     if (result?.verdict === 'avoid') return { figure: <span className="soft">{saving}</span>, third: 'not offered' };
-    return { figure: saving, third: 'a year, estimated' };
+    return { figure: saving, third: money.savingRange === null ? 'a year, ideal controller' : 'a year, estimated' };
   },
   proposal: ({ kept, review }) =>
     kept === null

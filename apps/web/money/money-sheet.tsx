@@ -64,11 +64,13 @@ function NotPriced({ papers }: { papers: MoneyPapers }) {
   );
 }
 
-function savingSentence({ recommended }: Money, saving: string, isOver: boolean): string {
-  if (isOver) return `Over a limit, this bank is not offered. It would save ${saving} a year, ${noGuarantee()}.`;
+function savingSentence({ recommended, savingRange }: Money, amount: string, isOver: boolean): string {
+  // The other cases are worked out once the hand rests.
+  const saving = savingRange === null ? `${amount} a year with an ideal controller` : `${amount} a year`;
+  if (isOver) return `Over a limit, this bank is not offered. It would save ${saving}, ${noGuarantee()}.`;
   return recommended === 'do nothing'
     ? `Nothing is to be built for money’s sake; ${noGuarantee()}.`
-    : `The bank saves ${saving} a year, ${noGuarantee()}.`;
+    : `The bank saves ${saving}, ${noGuarantee()}.`;
 }
 
 function Figures({ money, papers, isOver }: { money: Money; papers: MoneyPapers; isOver: boolean }) {
