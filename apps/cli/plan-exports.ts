@@ -73,8 +73,13 @@ interface TablesAsked {
   target: ProposalTarget;
 }
 
-/** What writes tables is loaded only where they are wanted. */
-async function tablesOf(
+/**
+ * A plan, or its calculation sheet, as a file; what writes it is loaded only here.
+ * @param plan result and inputs
+ * @param option which of the two
+ * @param form of the file
+ */
+export async function tablesOf(
   { result, inputs }: Pick<ToExport, 'result' | 'inputs'>,
   option: TablesAsked['option'],
   form: TableForm,

@@ -36,11 +36,13 @@ export type PlanDocument = Record<string, unknown>;
 
 /** Thrown where a file names one hash and holds something of another. */
 export class AlteredExport extends InputProblem {
+  readonly kind: 'plan' | 'calculation';
   /** of the plan it says it is, 64 hexadecimal digits */
   readonly contentHash: string;
 
-  constructor(problem: Problem, contentHash: string) {
+  constructor(problem: Problem, { kind, contentHash }: Pick<AlteredExport, 'kind' | 'contentHash'>) {
     super([problem]);
+    this.kind = kind;
     this.contentHash = contentHash;
   }
 }
@@ -119,8 +121,8 @@ async function takenPlan(result: PlanDocument, seal: PlanDocument, hash: TextHas
   const resultHash = hashIn(seal, 'resultHash');
   const { inputs } = seal;
   if (!isPlanInputs(inputs)) throw misshapen('frozen.inputs', 'kind, site, record hash, zone and engine version');
-  needSame({ what: 'inputs', contentHash, named: contentHash, held: hash(planContent(inputs)) });
-  needSame({ what: 'numbers', contentHash, named: resultHash, held: resultHashOf(result, contentHash, hash) });
+  needSame('plan', { what: 'inputs', contentHash, named: contentHash, held: hash(planContent(inputs)) });
+  needSame('plan', { what: 'numbers', contentHash, named: resultHash, held: resultHashOf(result, contentHash, hash) });
   if (!isResult(result)) throw misshapen('', 'a result with its parts');
   await needReadable(inputs);
   return { kind: 'plan', contentHash, resultHash, inputs, result };
@@ -131,7 +133,12 @@ function takenCalculation(rest: PlanDocument, seal: PlanDocument, hash: TextHash
   const sheetHash = hashIn(seal, 'sheetHash');
   const { figures } = rest;
   if (!isFigures(figures)) throw misshapen('figures', 'figures with formula, working, source and inputs');
-  needSame({ what: 'figures', contentHash, named: sheetHash, held: sheetHashOf(figures, contentHash, hash) });
+  needSame('calculation', {
+    what: 'figures',
+    contentHash,
+    named: sheetHash,
+    held: sheetHashOf(figures, contentHash, hash),
+  });
   return { kind: 'calculation', contentHash, sheetHash, figures };
 }
 
@@ -166,10 +173,13 @@ function misshapen(path: string, expected: string): InputProblem {
   return new InputProblem([{ code: 'inconsistent', ...place, expected, found: 'something else' }]);
 }
 
-function needSame(of: { what: string; contentHash: string; named: string; held: string }): void {
+function needSame(
+  kind: AlteredExport['kind'],
+  of: { what: string; contentHash: string; named: string; held: string },
+): void {
   const { what, contentHash, named, held } = of;
   if (named === held) return;
   const expected = `the ${what} that were exported, ${named.slice(0, 16)}`;
   const found = `others, ${held.slice(0, 16)}: the file was changed after it was exported`;
-  throw new AlteredExport({ code: 'inconsistent', expected, found }, contentHash);
+  throw new AlteredExport({ code: 'inconsistent', expected, found }, { kind, contentHash });
 }

@@ -52,6 +52,37 @@ export async function readPlanFile(bytes: Uint8Array, takes: Takes): Promise<Tak
   return taken;
 }
 
+/** What an exported file says for itself, before a register is asked. */
+export interface HeldExport {
+  kind: 'plan' | 'calculation';
+  contentHash: string;
+  /** result of a plan, figures of a sheet; null where the file is not what was exported */
+  numbers: object | null;
+  /** how it shows that it is not */
+  fault: Problem | null;
+}
+
+/**
+ * What a file holds of a plan, whether or not it is as it was exported.
+ * @param bytes of the file
+ * @param takes hash and tables of the rim
+ * @returns null where it is no export
+ */
+export async function heldExport(bytes: Uint8Array, takes: Takes): Promise<HeldExport | null> {
+  if (!mayBePlanFile(bytes)) return null;
+  try {
+    const taken = await readPlanFile(bytes, takes);
+    const { kind, contentHash } = taken;
+    return { kind, contentHash, numbers: taken.kind === 'plan' ? taken.result : taken.figures, fault: null };
+  } catch (error) {
+    if (error instanceof AlteredExport) {
+      return { kind: error.kind, contentHash: error.contentHash, numbers: null, fault: error.problems[0]! };
+    }
+    if (error instanceof InputProblem) return null;
+    throw error;
+  }
+}
+
 const EXPECTED = 'a plan or a calculation sheet as it was exported: JSON, CSV or XLSX';
 
 /**
@@ -138,7 +169,7 @@ function needSameSheets(sheets: readonly SheetRead[], tables: readonly NamedTabl
       const place = { path: `sheet ${JSON.stringify(name)}`, row: row + 1, column: column + 1 };
       const expected = `what the plan holds, ${JSON.stringify(written[column] ?? null)?.slice(0, 80)}`;
       const found = JSON.stringify((read[column] ?? '').slice(0, 80));
-      throw new AlteredExport({ code: 'inconsistent', ...place, expected, found }, contentHash);
+      throw new AlteredExport({ code: 'inconsistent', ...place, expected, found }, { kind: 'plan', contentHash });
     }
   }
 }

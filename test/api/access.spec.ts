@@ -30,6 +30,7 @@ const BODIES: Asking['bodies'] = {
   [`POST ${SITE}/records`]: csv,
   [`POST ${SITE}/records/:recordId/revisions`]: csv,
   'POST /api/site-imports': csv,
+  'POST /api/plan-imports': csv,
   'POST /api/verify': { body: 'x', type: 'application/pdf' },
   'PUT /api/kept-maps/:keptMapId': { body: { name: 'x', map: {} } },
   // Asked to wait for ever, it is refused once the revision was found, before it computes.

@@ -183,7 +183,7 @@ describe('a plan that is exported and taken back', () => {
     ['a hash that is none', () => withSeal({ contentHash: 'x' }), 'inconsistent'],
     [
       'parts within parts without end',
-      () => Buffer.from('{"a":'.repeat(100_000) + '1' + '}'.repeat(100_000)),
+      () => Buffer.from(`${'{"a":'.repeat(100_000)}1${'}'.repeat(100_000)}`),
       'unknown-format',
     ],
     ['numbers beyond all bounds', () => Buffer.from('{"frozen":{"form":"plan 1"},"a":1e999}'), 'unknown-format'],
