@@ -63,8 +63,8 @@ export function judgeTask({ task, port }: { task: JudgeTask; port: MessagePort }
     // A bank that stands there and is over a limit comes with what to do at once.
     const tonight = installedTonight(outcome, task.site);
     return {
-      result: isEstimate(outcome) || task.kind === 'plan' ? outcome.result : withTonight(outcome.result, tonight),
-      report: isEstimate(outcome) ? estimateReport(outcome) : resultReport(outcome, tonight),
+      result: task.kind === 'plan' ? outcome.result : withTonight(outcome.result, tonight),
+      report: isEstimate(outcome) ? estimateReport(outcome, tonight) : resultReport(outcome, tonight),
       row: siteRow(outcome),
       proposal: task.sheet === null ? null : await proposalOf(outcome, task, { ...task.sheet, tonight }),
       outcome: task.wantsOutcome ? outcome : null,
