@@ -92,7 +92,7 @@ function stdinProblems(operands: string[], { values, lists, loads }: CommandLine
   const inputs = ['map', 'logo', 'before', 'before-load'].map((name) => values.get(name));
   const named = [...operands, ...loads, ...inputs, ...(lists.get('extend') ?? [])];
   const files = named.filter((file) => file === STDIN);
-  const toStdin = ['pdf', 'netlist', 'export', 'calculation', 'figures', 'keep']
+  const toStdin = ['pdf', 'netlist', 'export', 'calculation', 'figures', 'keep', 'site']
     .filter((name) => values.get(name) === STDIN)
     .map((name) => usage(`--${name} with the name of a file`, '"-"'));
   return files.length > 1 ? [usage('"-" for one file only', `it ${files.length} times`), ...toStdin] : toStdin;

@@ -93,13 +93,32 @@ export const COMMANDS: Record<string, Command> = {
 `,
     load: () => import('./scan.js'),
   },
+  import: {
+    operand: 'FILE',
+    values: { ...METER_OPTIONS, load: 'METER-FILE', export: 'OUT', calculation: 'OUT', site: 'OUT' },
+    lists: METER_LISTS,
+    flags: ['json', 'again'],
+    does: 'take an exported plan or calculation sheet back',
+    details: `  FILE               what plan --export or --calculation wrote, or the server gave: .json, .csv or .xlsx; refused where
+                     anything of it was changed since
+  --site OUT         write the site file that the plan was made from: .json, .csv or .xlsx
+  --export OUT       write the plan in another form, with the same hash
+  --calculation OUT  write the calculation sheet in another form, with the same hash
+  --again            compute the plan again from what it was made from and compare every value; needs
+  --load METER-FILE  the meter's record, unless it rests on an estimate
+${METER_DETAILS}                     Exit: 0 as it was exported, and the same where it was computed again; 6 where it was not the
+                     same; 3 refused
+`,
+    load: () => import('./import.js'),
+  },
   verify: {
     operand: 'FILE',
     values: { database: 'URL' },
     lists: {},
     flags: ['json'],
     does: 'say whether a paper is what was approved',
-    details: `  FILE               the PDF; or the 16 digits behind "content" at the head of a page, for a scan
+    details: `  FILE               the PDF, an exported plan or calculation sheet; or the 16 digits behind "content" at the head of a
+                     page, for a scan
   --database URL     of the installation that issued it, "sqlite:FILE" or "postgres://…"; else DB_URL, or the server's
                      own file under DATA_DIR; it is only read
                      Exit: 0 approved as it stands, also signed afterwards; 6 superseded, withdrawn, a draft or altered;

@@ -59,7 +59,10 @@ async function judgeWith(pool: WorkerPool, line: CommandLine, kind: Outcome['kin
     await target.write(first.proposal);
     say(`proposal written to ${pdf}`);
   }
-  if (first?.outcome) for (const path of await exports.write(first.outcome)) say(`written: ${path}`);
+  const { result, outcome, inputs } = first ?? {};
+  if (result && outcome && inputs) {
+    for (const path of await exports.write({ result, outcome, inputs })) say(`written: ${path}`);
+  }
   await tell(line, asked, judged);
   return judged.some(({ result }) => result.verdict === 'avoid') ? EXIT.avoid : EXIT.done;
 }

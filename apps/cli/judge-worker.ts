@@ -1,12 +1,9 @@
 // The thread that plans and judges: the program's own stays free to say how far it is, and to hear an interruption.
-import { createHash } from 'node:crypto';
 import type { MessagePort } from 'node:worker_threads';
-import { planContent } from '#libs/contract/plan-content.js';
-import { recordBytes } from '#libs/contract/record-hash.js';
+import { type PlanInputs, planContent } from '#libs/contract/plan-content.js';
 import {
   assessEstimate,
   type BankTonight,
-  ENGINE_VERSION,
   type EstimateOutcome,
   type EstimateResult,
   firmOutcome,
@@ -28,6 +25,7 @@ import { putEstimateInWords, putInWords } from '#libs/present/put-in-words.js';
 import { type SiteRow, siteRow } from '#libs/present/sites-table.js';
 import { estimateReport, resultReport } from '#libs/present/terminal-report.js';
 import { withTonight } from '#libs/present/tonight-words.js';
+import { frozenInputs, textHash } from './frozen-inputs.js';
 import type { PaperSheet } from './paper-sheet.js';
 
 /** A site to plan or judge. */
@@ -50,6 +48,8 @@ export interface Judged {
   row: SiteRow;
   proposal: Uint8Array | null;
   outcome: Outcome | EstimateOutcome | null;
+  /** what the answer depends on, where the outcome is sent back */
+  inputs: PlanInputs | null;
 }
 
 /** Share of the whole at which planning, and weighing with the inputs moved, are done. */
@@ -63,11 +63,12 @@ export function judgeTask({ task, port }: { task: JudgeTask; port: MessagePort }
     // A bank that stands there and is over a limit comes with what to do at once.
     const tonight = installedTonight(outcome, task.site);
     return {
-      result: isEstimate(outcome) || task.kind === 'plan' ? outcome.result : withTonight(outcome.result, tonight),
-      report: isEstimate(outcome) ? estimateReport(outcome) : resultReport(outcome, tonight),
+      result: task.kind === 'plan' ? outcome.result : withTonight(outcome.result, tonight),
+      report: isEstimate(outcome) ? estimateReport(outcome, tonight) : resultReport(outcome, tonight),
       row: siteRow(outcome),
       proposal: task.sheet === null ? null : await proposalOf(outcome, task, { ...task.sheet, tonight }),
       outcome: task.wantsOutcome ? outcome : null,
+      inputs: task.wantsOutcome ? frozenInputs(task) : null,
     };
   });
 }
@@ -86,27 +87,21 @@ function byEstimate({ kind, site, zone }: JudgeTask, watch: Watch): EstimateOutc
 /** The drawing of papers is loaded only where one is wanted. */
 async function proposalOf(
   outcome: Outcome | EstimateOutcome,
-  { kind, site, record, zone }: JudgeTask,
+  task: JudgeTask,
   more: PaperSheet & { tonight: BankTonight | null },
 ): Promise<Uint8Array> {
   const { renderProposal } = await import('#libs/proposal/render-proposal.js');
-  const recordHash = record === null ? null : sha256(recordBytes(record));
-  const contentHash = sha256([planContent({ kind, site, recordHash, zone, engineVersion: ENGINE_VERSION })]);
+  const inputs = frozenInputs(task);
+  const contentHash = textHash(planContent(inputs));
   return renderProposal(outcome, {
     number: contentHash.slice(0, 8),
     revision: 0,
     state: 'draft, not reviewed',
     preparedBy: null,
     contentHash,
-    recordHash,
-    engineVersion: ENGINE_VERSION,
+    recordHash: inputs.recordHash,
+    engineVersion: inputs.engineVersion,
     date: outcome.site.asOf,
     ...more,
   });
-}
-
-function sha256(chunks: Iterable<string | Uint8Array>): string {
-  const hash = createHash('sha256');
-  for (const chunk of chunks) hash.update(chunk);
-  return hash.digest('hex');
 }

@@ -1,17 +1,34 @@
 import { mkdir, writeFile } from 'node:fs/promises';
 import { extname, join } from 'node:path';
-import { type EstimateOutcome, InputProblem, type Outcome } from '#libs/engine/index.js';
+import { type PlanInputs, planContent } from '#libs/contract/plan-content.js';
+import { calculationDocument, planDocument } from '#libs/contract/plan-document.js';
+import {
+  type EstimateOutcome,
+  type EstimateResult,
+  InputProblem,
+  type Outcome,
+  type Result,
+} from '#libs/engine/index.js';
 import { TABLE_FORMS, type TableForm } from '#libs/meter-files/write-tables.js';
 import type { CommandLine } from './command.js';
 import { usage } from './command-line.js';
+import { textHash } from './frozen-inputs.js';
 import { type ProposalTarget, proposalTarget } from './proposal-target.js';
+
+/** A plan to be written out. */
+export interface ToExport {
+  /** as it is answered, in words */
+  result: Result | EstimateResult;
+  outcome: Outcome | EstimateOutcome;
+  inputs: PlanInputs;
+}
 
 /** What is written of a plan besides its proposal. */
 export interface PlanExports {
   /** whether anything is */
   areWanted: boolean;
   /** @returns the files that were written */
-  write(outcome: Outcome | EstimateOutcome): Promise<string[]>;
+  write(plan: ToExport): Promise<string[]>;
 }
 
 /**
@@ -42,9 +59,9 @@ export async function planExports({ values }: CommandLine): Promise<PlanExports>
   if (folder !== undefined) await prepared(folder);
   return {
     areWanted: tables.length > 0 || folder !== undefined,
-    async write(outcome) {
-      for (const one of tables) await writeTables(outcome, one);
-      const figures = folder === undefined ? [] : await writeFigures(outcome, folder);
+    async write(plan) {
+      for (const one of tables) await one.target.write(await tablesOf(plan, one.option, one.form));
+      const figures = folder === undefined ? [] : await writeFigures(plan.outcome, folder);
       return [...tables.map(({ path }) => path), ...figures];
     },
   };
@@ -56,18 +73,22 @@ interface TablesAsked {
   target: ProposalTarget;
 }
 
-/** What writes tables is loaded only where they are wanted. */
-async function writeTables(
-  { result }: Outcome | EstimateOutcome,
-  { option, form, target }: TablesAsked,
-): Promise<void> {
+/**
+ * A plan, or its calculation sheet, as a file; what writes it is loaded only here.
+ * @param plan result and inputs
+ * @param option which of the two
+ * @param form of the file
+ */
+export async function tablesOf(
+  { result, inputs }: Pick<ToExport, 'result' | 'inputs'>,
+  option: TablesAsked['option'],
+  form: TableForm,
+): Promise<Uint8Array> {
   const { calculationFile, planFile } = await import('#libs/meter-files/plan-file.js');
   const { calculationTable, planTables } = await import('#libs/present/result-tables.js');
-  const bytes =
-    option === 'export'
-      ? planFile(result, planTables(result), form)
-      : calculationFile(result.figures, calculationTable(result), form);
-  await target.write(bytes);
+  if (option === 'export') return planFile(planDocument(result, inputs, textHash), planTables(result), form);
+  const document = calculationDocument(result, textHash(planContent(inputs)), textHash);
+  return calculationFile(document, calculationTable(result), form);
 }
 
 async function writeFigures(outcome: Outcome | EstimateOutcome, folder: string): Promise<string[]> {

@@ -4,7 +4,6 @@ import { EXIT } from '#libs/contract/error-body.js';
 import { frozenSite } from '#libs/contract/frozen-site.js';
 import { planContent } from '#libs/contract/plan-content.js';
 import { readSiteWithMathjs } from '#libs/contract/read-site-with-mathjs.js';
-import { recordBytes } from '#libs/contract/record-hash.js';
 import { zoneTableOf } from '#libs/contract/time-zone.js';
 import {
   ENGINE_VERSION,
@@ -22,6 +21,7 @@ import { resultReport } from '#libs/present/terminal-report.js';
 import { withTonight } from '#libs/present/tonight-words.js';
 import type { CommandLine } from './command.js';
 import { usage } from './command-line.js';
+import { frozenInputs } from './frozen-inputs.js';
 import { readMeterRecord } from './meter-record.js';
 import { say, write, writeJson } from './output.js';
 import { type PaperSheet, paperSheet } from './paper-sheet.js';
@@ -56,10 +56,10 @@ export async function reevaluate(line: CommandLine): Promise<number> {
     await target.write(await paperOf(judged, [after, before], sheet));
     say(`proposal written to ${pdf}`);
   }
-  for (const path of await exports.write(judged.after)) say(`written: ${path}`);
-  const { result } = judged.after;
-  if (line.flags.has('json'))
-    await writeJson({ ...withTonight(result, judged.reevaluation), reevaluation: judged.reevaluation });
+  const result = withTonight(judged.after.result, judged.reevaluation);
+  const inputs = frozenInputs({ kind: 'assess', ...after });
+  for (const path of await exports.write({ result, outcome: judged.after, inputs })) say(`written: ${path}`);
+  if (line.flags.has('json')) await writeJson({ ...result, reevaluation: judged.reevaluation });
   else await write(`${reevaluationReport(judged)}\n${resultReport(judged.after)}`);
   return result.verdict === 'avoid' ? EXIT.avoid : EXIT.done;
 }
@@ -100,10 +100,7 @@ async function paperOf(
   const { renderProposal } = await import('#libs/proposal/render-proposal.js');
   const hash = createHash('sha256');
   for (const { site, record, zone } of inputs) {
-    const recordHash = createHash('sha256');
-    for (const chunk of recordBytes(record)) recordHash.update(chunk);
-    const content = { site, zone, recordHash: recordHash.digest('hex'), engineVersion: ENGINE_VERSION };
-    hash.update(planContent({ kind: 'assess', ...content }));
+    hash.update(planContent(frozenInputs({ kind: 'assess', site, record, zone })));
   }
   const contentHash = hash.digest('hex');
   return renderProposal(after, {

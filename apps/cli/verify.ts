@@ -2,12 +2,17 @@ import { existsSync } from 'node:fs';
 import { join, resolve } from 'node:path';
 import { EXIT } from '#libs/contract/error-body.js';
 import { InputProblem } from '#libs/engine/index.js';
+import { type HeldExport, heldExport } from '#libs/meter-files/read-plan-file.js';
+import { exportWords } from '#libs/present/export-words.js';
+import { planTables } from '#libs/present/result-tables.js';
 import { numberWords, paperWords } from '#libs/present/review-words.js';
 import { contentNumber, MOST_PAPER_BYTES, type PaperStanding } from '#libs/review/paper-standing.js';
 import type { ReviewState } from '#libs/review/review.js';
 import { openRegister, type Register } from '#libs/store/open-register.js';
+import { verifyExport } from '#libs/store/verify-export.js';
 import { everything, verifyNumber, verifyPaper } from '#libs/store/verify-paper.js';
 import type { CommandLine } from './command.js';
+import { textHash } from './frozen-inputs.js';
 import { openInput } from './input-file.js';
 import { write, writeJson } from './output.js';
 import { inFile } from './refused-file.js';
@@ -50,7 +55,27 @@ interface Answer {
   exit: number;
 }
 
-async function byFile({ manager }: Register, bytes: Uint8Array): Promise<Answer> {
+async function byFile(register: Register, bytes: Uint8Array): Promise<Answer> {
+  const held = await heldExport(bytes, { hash: textHash, tablesOf: planTables });
+  return held === null ? byPaper(register, bytes) : byExport(register, held);
+}
+
+async function byExport({ manager }: Register, { fault, ...held }: HeldExport): Promise<Answer> {
+  const { kind, contentHash } = held;
+  const { differences, ...answer } = await verifyExport(manager, held, everything);
+  const { paper, faults } = answer;
+  const name = paper === null ? null : `${paper.number}, revision ${paper.revision}`;
+  const { state = null, supersededBy = null } = paper ?? {};
+  const exported = { kind, differences, fault };
+  const text = exportWords({ ...answer, ...exported, name, state, supersededBy, registerHolds: faults.length === 0 });
+  return {
+    told: { ...answer, signedAfterwards: false, text, exported: { contentHash, ...exported } },
+    text,
+    exit: EXIT_OF[answer.standing],
+  };
+}
+
+async function byPaper({ manager }: Register, bytes: Uint8Array): Promise<Answer> {
   const { paper, faults, ...answer } = await verifyPaper(manager, bytes, everything);
   const name = paper === null ? null : `${paper.number}, revision ${paper.revision}`;
   const { state = null, supersededBy = null } = paper ?? {};

@@ -1,7 +1,9 @@
 import type { FastifyInstance, FastifyRequest } from 'fastify';
 import { RefusedRequest } from './refused-request.js';
 
-const UPLOADS = /\/records(\/:recordId\/revisions)?$|^\/api\/(verify|site-imports)$/;
+const UPLOADS = /\/records(\/:recordId\/revisions)?$|^\/api\/(verify|site-imports|plan-imports)$/;
+/** What may come in as JSON too, larger than a body that is read as such. */
+const JSON_FILES = /^\/api\/(verify|plan-imports)$/;
 /** Pages that work without scripts send forms; nothing else takes them. */
 const FORMS = /^\/(sign-in|sign-out|people|account)(\/|$)/;
 const FORM_TYPE = 'application/x-www-form-urlencoded';
@@ -32,6 +34,10 @@ export function refuseOtherBodies(fastify: FastifyInstance): void {
   fastify.addContentTypeParser(FORM_TYPE, { parseAs: 'string', bodyLimit: 10_000 }, (request, text, done) => {
     if (FORMS.test(request.routeOptions.url ?? '')) done(null, Object.fromEntries(new URLSearchParams(String(text))));
     else done(otherType('application/json'));
+  });
+  fastify.addHook('onRequest', async ({ routeOptions, headers }) => {
+    if (!JSON_FILES.test(routeOptions.url ?? '') || !/^application\/json\b/.test(headers['content-type'] ?? '')) return;
+    headers['content-type'] = 'application/octet-stream';
   });
   fastify.addHook('preValidation', async (request) => {
     const isUpload = takesFile(request);

@@ -14,6 +14,7 @@ import { DemoController } from './demo/demo-controller.js';
 import { loadDemo } from './demo/load-demo.js';
 import { ExportsController } from './exports/exports-controller.js';
 import { FiguresController } from './exports/figures-controller.js';
+import { PlanImportsController } from './exports/plan-imports-controller.js';
 import { SiteImportsController } from './exports/site-imports-controller.js';
 import { HealthController } from './health/health-controller.js';
 import { HomeController } from './home/home-controller.js';
@@ -90,6 +91,7 @@ const CONTROLLERS: ServerParts['controllers'] = [
   ExportsController,
   FiguresController,
   SiteImportsController,
+  PlanImportsController,
   JobsController,
   SessionController,
   PeopleController,

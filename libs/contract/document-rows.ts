@@ -1,13 +1,16 @@
 import { InputProblem, type Problem } from '#libs/engine/index.js';
-import { type TableCell, unguarded } from './csv-text.js';
+import type { TableCell } from './csv-text.js';
 
 /** Names of the columns of a document written as rows. */
 export const DOCUMENT_HEADS = ['path', 'kind', 'value'] as const;
 
 const KEY = /^[A-Za-z_]\w*$/;
-const STEP = /([A-Za-z_]\w*)|\[(\d{1,5})\]/y;
+const STEP = /([A-Za-z_]\w*)|\[(\d{1,5})\]|\[("(?:[^"\\]|\\.){0,200}")\]/y;
+/** A site file is written by hand. */
 const MOST_ROWS = 50_000;
 const MOST_DEPTH = 24;
+/** What a cell of a sheet does not keep: line ends, control characters, halves of a character. */
+const BROKEN = /\p{Cc}|\p{Cs}|[\ufffe\uffff]/u;
 
 /**
  * A document of plain JSON as rows of path, kind and value, in its own order; nothing of it is lost.
@@ -23,6 +26,7 @@ export function documentRows(document: unknown): TableCell[][] {
 function rowsInto(rows: TableCell[][], path: string, value: unknown): void {
   if (Array.isArray(value)) listRowsInto(rows, path, value);
   else if (typeof value === 'object' && value !== null) objectRowsInto(rows, path, value);
+  else if (typeof value === 'string' && BROKEN.test(value)) rows.push([path, 'quoted text', jsonText(value)]);
   else if (value !== undefined) rows.push([path, kindOf(value), value as TableCell]);
 }
 
@@ -37,10 +41,14 @@ function objectRowsInto(rows: TableCell[][], path: string, object: object): void
   const entries = Object.entries(object).filter(([, member]) => member !== undefined);
   if (entries.length === 0) rows.push([path, 'empty object', null]);
   for (const [key, member] of entries) {
-    // a key that is no plain name is told and not read back: no site file has one
     const step = KEY.test(key) ? `${path === '' ? '' : '.'}${key}` : `[${JSON.stringify(key)}]`;
     rowsInto(rows, `${path}${step}`, member);
   }
+}
+
+function jsonText(text: string): string {
+  const escaped = (letter: string) => `\\u${letter.charCodeAt(0).toString(16).padStart(4, '0')}`;
+  return JSON.stringify(text).replace(/[\u007f-\u009f\ufffe\uffff]/g, escaped);
 }
 
 function kindOf(value: unknown): string {
@@ -60,20 +68,21 @@ export function areDocumentRows(rows: readonly (readonly string[])[]): boolean {
 
 /**
  * The document that its rows were written from.
- * @param rows cells as texts, the heads first
+ * @param rows cells as texts, no longer guarded, the heads first
+ * @param mostRows more are refused
  * @returns the document
  * @throws InputProblem naming every row that can't be understood
  */
-export function documentFromRows(rows: readonly (readonly string[])[]): unknown {
-  if (rows.length > MOST_ROWS) {
-    throw new InputProblem([{ code: 'too-large', expected: `at most ${MOST_ROWS} rows`, found: `${rows.length}` }]);
+export function documentFromRows(rows: readonly (readonly string[])[], mostRows = MOST_ROWS): unknown {
+  if (rows.length > mostRows) {
+    throw new InputProblem([{ code: 'too-large', expected: `at most ${mostRows} rows`, found: `${rows.length}` }]);
   }
   const holder: Tree = { root: undefined };
   const problems: Problem[] = [];
   rows.slice(1).forEach((row, at) => {
     const [path = '', kind = '', value = ''] = row;
     if (row.every((cell) => cell === '')) return;
-    const steps = stepsOf(unguarded(path));
+    const steps = stepsOf(path);
     const read = readValue(kind, value);
     if (steps === null) problems.push(rowProblem(at + 2, 1, 'a path such as supply.transformers[0].ratedKva', path));
     else if (read === undefined)
@@ -100,8 +109,9 @@ function stepsOf(path: string): Step[] | null {
   while (at < path.length) {
     STEP.lastIndex = at;
     const found = STEP.exec(path);
-    if (found === null || found[1] === '__proto__' || steps.length === MOST_DEPTH) return null;
-    steps.push(found[1] ?? Number(found[2]));
+    const step = found === null ? null : stepOf(found);
+    if (found === null || step === null || step === '__proto__' || steps.length === MOST_DEPTH) return null;
+    steps.push(step);
     at += found[0].length;
     if (path[at] === '.') at++;
     else if (at < path.length && path[at] !== '[') return null;
@@ -109,10 +119,29 @@ function stepsOf(path: string): Step[] | null {
   return path.endsWith('.') ? null : steps;
 }
 
+function stepOf([, name, at, quoted]: RegExpExecArray): Step | null {
+  if (quoted === undefined) return name ?? Number(at);
+  return textOfJson(quoted);
+}
+
+/** @returns the text, null where it is none */
+function textOfJson(json: string): string | null {
+  try {
+    const value: unknown = JSON.parse(json);
+    return typeof value === 'string' ? value : null;
+  } catch {
+    return null;
+  }
+}
+
 function readValue(kind: string, value: string): { value: unknown } | undefined {
   switch (kind) {
     case 'text':
-      return { value: unguarded(value) };
+      return { value };
+    case 'quoted text': {
+      const text = textOfJson(value);
+      return text === null ? undefined : { value: text };
+    }
     case 'number': {
       const number = Number(value);
       return value.trim() === '' || !Number.isFinite(number) ? undefined : { value: number };

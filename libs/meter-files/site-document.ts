@@ -1,9 +1,9 @@
-import { csvRows, csvText } from '#libs/contract/csv-text.js';
+import { csvRows, csvText, unguarded } from '#libs/contract/csv-text.js';
 import { areDocumentRows, DOCUMENT_HEADS, documentFromRows, documentRows } from '#libs/contract/document-rows.js';
 import { InputProblem } from '#libs/engine/index.js';
 import { isXlsx } from './format-starts.js';
 import type { TableForm } from './write-tables.js';
-import { readWorkbookRows } from './xlsx/read-workbook-rows.js';
+import { oneChunk, readWorkbookRows } from './xlsx/read-workbook-rows.js';
 import { writeWorkbook } from './xlsx/write-workbook.js';
 
 /**
@@ -35,18 +35,20 @@ export function isDocumentRows(bytes: Uint8Array): boolean {
  * @throws InputProblem where it is no such file, naming every row that can't be understood
  */
 export async function readDocumentRows(bytes: Uint8Array): Promise<unknown> {
-  const rows = isXlsx(bytes) ? await readWorkbookRows(once(bytes)) : csvRows(textOf(bytes));
+  const rows = isXlsx(bytes) ? await readWorkbookRows(oneChunk(bytes)) : textRows(bytes);
   if (rows !== null && areDocumentRows(rows)) return documentFromRows(rows);
   const expected = `rows under ${DOCUMENT_HEADS.join(', ')}, every quote closed`;
   throw new InputProblem([{ code: 'unreadable', expected, found: 'others' }]);
 }
 
-function textOf(bytes: Uint8Array): string {
-  return Buffer.from(bytes)
+/**
+ * Rows of comma-separated text; only there are texts guarded.
+ * @param bytes of the file
+ * @returns cells as texts, null where a quote is never closed
+ */
+export function textRows(bytes: Uint8Array): string[][] | null {
+  const text = Buffer.from(bytes)
     .toString('utf8')
     .replace(/^\ufeff/, '');
-}
-
-async function* once(bytes: Uint8Array): AsyncGenerator<Uint8Array> {
-  yield bytes;
+  return csvRows(text)?.map((row) => row.map(unguarded)) ?? null;
 }

@@ -17,7 +17,7 @@ type Entry = Record<string, unknown>;
  * @param result plan or judgement, in words
  * @returns one row a figure
  */
-export function calculationTable({ figures }: Result | EstimateResult): ResultTable {
+export function calculationTable({ figures }: Pick<Result, 'figures'>): ResultTable {
   const rows = figures.map(({ inputs, ...figure }) => ({
     ...figure,
     inputs: inputs.map(({ symbol, value, unit }) => `${symbol} = ${value}${unit === '' ? '' : ` ${unit}`}`).join('; '),

@@ -40,7 +40,7 @@ export function resultReport(outcome: Outcome, tonight: BankTonight | null = nul
   const lowest = operation.months.flatMap(({ powerFactorLagging: value }) => (value === null ? [] : [value]));
   const lines = [
     plainName(site.name),
-    ...(tonight === null ? [] : tonightSentences(tonight)).flatMap((sentence) => wrapped(`! ${sentence}`, '  ')),
+    ...tonightLines(tonight),
     `${outcome.kind === 'plan' ? 'Proposed' : 'Judged'}: ${proposedWords(outcome)}`,
     `Verdict: ${verdictWords(result.verdict)}. ${noPermission()}`,
     '',
@@ -74,15 +74,17 @@ export function resultReport(outcome: Outcome, tonight: BankTonight | null = nul
 /**
  * The answer of `plan` or `assess` without a record, for a terminal.
  * @param outcome the estimate
+ * @param tonight what to do at once with an installed bank, null for any other
  * @returns lines of plain text, ending in a line end
  */
-export function estimateReport(outcome: EstimateOutcome): string {
+export function estimateReport(outcome: EstimateOutcome, tonight: BankTonight | null = null): string {
   const { result, site } = outcome;
   const { control, estimate } = result;
   const left = estimate.refused.flatMap((one) => wrapped(`- ${remarkSentence(one)}`, '  '));
   return finished([
     plainName(site.name),
     'ESTIMATE, without a meter’s record',
+    ...tonightLines(tonight),
     `${outcome.kind === 'plan' ? 'Proposed' : 'Judged'}, ${estimateWords(outcome)}`,
     `Verdict: ${verdictWords(result.verdict)}. ${noPermission()}`,
     '',
@@ -100,6 +102,10 @@ export function estimateReport(outcome: EstimateOutcome): string {
     'Left out, since an estimate can’t support it:',
     ...left,
   ]);
+}
+
+function tonightLines(tonight: BankTonight | null): string[] {
+  return (tonight === null ? [] : tonightSentences(tonight)).flatMap((sentence) => wrapped(`! ${sentence}`, '  '));
 }
 
 function needLines({ result }: EstimateOutcome): string[] {

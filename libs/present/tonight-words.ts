@@ -1,4 +1,12 @@
-import type { BankTonight, MeasuredEntry, Result, StagesOut, ToMend, Tonight } from '#libs/engine/index.js';
+import type {
+  BankTonight,
+  EstimateResult,
+  MeasuredEntry,
+  Result,
+  StagesOut,
+  ToMend,
+  Tonight,
+} from '#libs/engine/index.js';
 import { deviceName } from './device-words.js';
 import { engineName } from './engine-name.js';
 import { countWord } from './findings.js';
@@ -10,6 +18,8 @@ import { VERDICT_WORDS } from './verdict-words.js';
 export interface TonightInWords extends Tonight {
   /** entries of the bank as it measures, as `out` of the stages out counts them */
   stages: MeasuredEntry[];
+  /** where the load is an estimate */
+  byEstimate?: true;
   sentences: string[];
 }
 
@@ -19,12 +29,14 @@ export interface TonightInWords extends Tonight {
  * @param bank stages of an installed bank and which to keep out; null for a bank that is not installed
  * @returns the result with `tonight`, null where there is nothing to do
  */
-export function withTonight<Judged extends Result>(
+export function withTonight<Judged extends Result | EstimateResult>(
   result: Judged,
   bank: BankTonight | null,
 ): Judged & { tonight: TonightInWords | null } {
   if (bank === null || bank.tonight === null) return { ...result, tonight: null };
-  return { ...result, tonight: { ...bank.tonight, stages: bank.stages, sentences: tonightSentences(bank) } };
+  const { tonight, stages, byEstimate } = bank;
+  const told = byEstimate === true ? { byEstimate } : {};
+  return { ...result, tonight: { ...tonight, stages, ...told, sentences: tonightSentences(bank) } };
 }
 
 /**
@@ -32,11 +44,14 @@ export function withTonight<Judged extends Result>(
  * @param bank stages of the installed bank, and which to keep out
  * @returns sentences; none where the bank is over no limit
  */
-export function tonightSentences({ tonight, stages }: BankTonight): string[] {
+export function tonightSentences({ tonight, stages, byEstimate }: BankTonight): string[] {
   if (tonight === null) return [];
   const { within, nearLimits, until } = tonight;
+  const isEstimated = byEstimate === true;
   const sentences = [
-    say`Tonight: keep out ${withKvar(within, stages)}. ${leftWords(within)}`,
+    isEstimated
+      ? say`Tonight, by an estimate of the load: keep out ${withKvar(within, stages)}. ${leftWords(within)}`
+      : say`Tonight: keep out ${withKvar(within, stages)}. ${leftWords(within)}`,
     say`A qualified person switches them off, secures them against reconnection and waits out their discharge, as the
       section of cautions says; the controller must not be able to connect them.`,
     say`They stay out until the bank is judged again and these are within limits: ${listed(until.map(toMendWords))}.`,
@@ -45,6 +60,13 @@ export function tonightSentences({ tonight, stages }: BankTonight): string[] {
     sentences.push(
       say`With ${withKvar(nearLimits, stages)} out nothing is over a limit, though near one: a second best, to be
         accepted by whoever answers for the installation.`,
+    );
+  }
+  if (isEstimated) {
+    sentences.push(
+      say`No meter’s record stands behind this: load that damps a resonance counts only where it is stated, and the load
+        current is that of the distorting loads alone, the severe ends of both. With a record more may stay in; without
+        one nothing more does.`,
     );
   }
   return sentences;

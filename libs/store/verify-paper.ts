@@ -107,19 +107,31 @@ async function namedBy(
   seen: Seen,
 ): Promise<KnownPaper[]> {
   const search = () => seen(manager.createQueryBuilder(Revision, 'revision'));
-  const byHash =
-    contentHashes.length === 0
-      ? []
-      : await search()
-          .andWhere('revision.contentHash IN (:...contentHashes)', { contentHashes })
-          .orderBy('revision.createdAt')
-          .take(MOST_FOUND)
-          .getMany();
+  const byHash = await revisionsOfContent(manager, contentHashes, seen);
   // equal inputs may have led to several revisions: the file names its own
   const isNamed = ({ number, revision }: Revision): boolean => names.includes(`${number}, revision ${revision}`);
   byHash.sort((one, other) => Number(isNamed(other)) - Number(isNamed(one)));
   const found = byHash.length > 0 ? byHash : (await Promise.all(names.map((name) => byName(search(), name)))).flat();
   return Promise.all(found.map((revision) => knownPaper(manager, revision, { matched: 'named', sha256: null })));
+}
+
+/**
+ * Revisions of equal inputs, the earliest first.
+ * @param manager a read's manager
+ * @param contentHashes of the inputs
+ * @param seen narrows the search
+ */
+export async function revisionsOfContent(
+  manager: EntityManager,
+  contentHashes: readonly string[],
+  seen: Seen,
+): Promise<Revision[]> {
+  if (contentHashes.length === 0) return [];
+  return seen(manager.createQueryBuilder(Revision, 'revision'))
+    .andWhere('revision.contentHash IN (:...contentHashes)', { contentHashes })
+    .orderBy('revision.createdAt')
+    .take(MOST_FOUND)
+    .getMany();
 }
 
 function byName(search: SelectQueryBuilder<Revision>, name: string): Promise<Revision[]> {

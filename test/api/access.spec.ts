@@ -2,12 +2,14 @@ import { Controller, Get, Param } from '@nestjs/common';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { Needs } from '#apps/server/people/needs.js';
 import type { Role } from '#apps/server/people/actor.js';
+import { dataSourceFor, readAddress } from '#libs/store/data-source.js';
+import { RevisionLink } from '#libs/store/revision-link.js';
 import { Store } from '#libs/store/store.js';
 import { StoredSite } from '#libs/store/stored-site.js';
 import { accessCells, type Asking, type Cell, faultsOf, type Ids, type World } from '../support/access-cells.js';
 import { databases, type TestDatabase } from '../support/databases.js';
 import { makePeople } from '../support/made-people.js';
-import { startServer, type TestServer } from '../support/test-server.js';
+import { type Answer, startServer, type TestServer } from '../support/test-server.js';
 import { meterFile, siteFile } from './site-builder.js';
 
 const SITE = '/api/sites/:siteId';
@@ -30,6 +32,7 @@ const BODIES: Asking['bodies'] = {
   [`POST ${SITE}/records`]: csv,
   [`POST ${SITE}/records/:recordId/revisions`]: csv,
   'POST /api/site-imports': csv,
+  'POST /api/plan-imports': csv,
   'POST /api/verify': { body: 'x', type: 'application/pdf' },
   'PUT /api/kept-maps/:keptMapId': { body: { name: 'x', map: {} } },
   // Asked to wait for ever, it is refused once the revision was found, before it computes.
@@ -199,6 +202,27 @@ describe('who may do what', () => {
     const gone = await server.ask('GET', `/api${linkPath}`);
     const never = await server.ask('GET', `/api/links/${'a'.repeat(43)}`);
     expect([gone.status, gone.body]).toEqual([404, never.body]);
+  });
+
+  it('shows nothing by a link that has expired: it answers as one that never was', async () => {
+    const path = `/api/sites/${world.ours('planner').siteId}/revisions/1/links`;
+    const { id: linkId, path: linkPath } = (await server.ask('POST', path, { days: 1 }, world.headers.planner)).body;
+    const answers = (link: string) =>
+      Promise.all([link, `/api${link}`, `/api${link}/proposal.pdf`].map((one) => server.ask('GET', one)));
+    const shown = ({ status, body }: Answer) => [status, body];
+    const never = (await answers(`/links/${'a'.repeat(43)}`)).map(shown);
+    expect((await answers(linkPath)).map(({ status }) => status)).toEqual([200, 200, 200]);
+    const raw = await dataSourceFor(readAddress(database.url)).initialize();
+    // the control: a minute before its end it holds, a minute after it does not
+    for (const [from, status] of [
+      [1000, 200],
+      [-1000, 404],
+    ] as const) {
+      await raw.manager.update(RevisionLink, { id: linkId }, { expiresAt: new Date(Date.now() + 60 * from) });
+      expect((await answers(linkPath)).map((one) => one.status)).toEqual([status, status, status]);
+    }
+    await raw.destroy();
+    expect((await answers(linkPath)).map(shown)).toEqual(never);
   });
 
   @Controller('api/leaky')

@@ -6,6 +6,7 @@ import { readSite } from '#libs/contract/read-site.js';
 import { assessEstimate, planEstimate, withRobustness } from '#libs/engine/index.js';
 import { putEstimateInWords } from '#libs/present/put-in-words.js';
 import { type TestDatabase, usualDatabases } from '../support/databases.js';
+import { squeezed, textOf } from '../support/pdf-text.js';
 import { startServer, type TestServer } from '../support/test-server.js';
 import { meterFile, siteFile } from './site-builder.js';
 
@@ -43,13 +44,26 @@ for (const { name, available, create } of usualDatabases) {
         const { status, body } = await asked(id, what);
         expect(status).toBe(201);
         const { result } = withRobustness(judge(site, estimateZone(site)));
-        expect(body.result).toEqual(JSON.parse(JSON.stringify(putEstimateInWords(result))));
+        // a bank that does not stand there has nothing to be kept out of it
+        const beside = what === 'assessments' ? { tonight: null } : {};
+        expect(body.result).toEqual(JSON.parse(JSON.stringify({ ...putEstimateInWords(result), ...beside })));
         expect(body).toMatchObject({ recordId: null, recordHash: null, links: { record: null } });
         expect(body.proposed).toMatch(/^estimate: /);
         expect(body.verdict).not.toBe('clear');
         const content = planContent({ ...body.inputs });
         expect(createHash('sha256').update(content).digest('hex')).toBe(body.contentHash);
       }
+    });
+
+    it('say of a bank that stands there over a limit what to keep out, by an estimate', async () => {
+      const { bank } = siteFile() as { bank: object };
+      const id = await newSite({ estimate, bank: { ...bank, installed: true } });
+      const { body } = await asked(id, 'assessments');
+      expect(body.verdict).toBe('avoid');
+      expect(body.result.tonight).toMatchObject({ byEstimate: true, within: { verdict: 'clear' } });
+      expect(body.result.tonight.sentences[0]).toMatch(/^Tonight, by an estimate of the load: keep out /);
+      const paper = await server.ask('GET', body.links.proposal);
+      expect(squeezed(textOf(paper.body))).toContain(squeezed('Tonight, by an estimate of the load'));
     });
 
     it('have their paper, are listed, and are one revision for equal inputs', async () => {

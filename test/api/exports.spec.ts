@@ -3,7 +3,9 @@ import { deflateSync } from 'node:zlib';
 import { parse } from 'csv-parse/sync';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { canonicalJson } from '#libs/contract/canonical-json.js';
+import { calculationDocument, planDocument } from '#libs/contract/plan-document.js';
 import { readWorkbookRows } from '#libs/meter-files/xlsx/read-workbook-rows.js';
+import { sha256 } from '#libs/store/audit-log.js';
 import { dataSourceFor, readAddress } from '#libs/store/data-source.js';
 import { databases, type TestDatabase } from '../support/databases.js';
 import { pngFile } from '../support/made-picture.js';
@@ -71,7 +73,9 @@ describe('exports over HTTP', () => {
 
   it('give plan and calculation sheet with the result’s own numbers', async () => {
     const { result } = (await server.ask('GET', `/api/sites/${id}/revisions/1`)).body;
-    expect(JSON.parse((await file('/revisions/1/plan')).bytes.toString())).toEqual(result);
+    const { frozen, ...exported } = JSON.parse((await file('/revisions/1/plan')).bytes.toString());
+    expect(exported).toEqual(result);
+    expect([frozen.form, frozen.contentHash]).toEqual(['plan 1', contentHash]);
     const rows = parse((await file('/revisions/1/plan?form=csv')).bytes, { columns: true }) as Record<string, string>[];
     const value = (path: string) => Number(rows.find((row) => row.path === path)!.value);
     expect(value('requirement.p99Kvar')).toBe(result.requirement.p99Kvar);
@@ -89,6 +93,111 @@ describe('exports over HTTP', () => {
     expect(cells.slice(1).map(([, , cell]) => Number(cell))).toEqual(
       result.figures.map((figure: { value: number }) => figure.value),
     );
+  });
+
+  const TYPES: Record<string, string> = {
+    json: 'application/json',
+    csv: 'text/csv',
+    xlsx: 'application/vnd.openxmlformats-officedocument.spreadsheetml.sheet',
+  };
+
+  it.each(FORMS)(
+    'take a plan back as %s: its site, with its record, comes to the same content and numbers',
+    async (form) => {
+      const { bytes } = await file(`/revisions/1/plan?form=${form}`);
+      const answer = await imported('/api/plan-imports', bytes, TYPES[form]!);
+      const taken = (await answer.json()) as Taken;
+      expect([answer.status, taken.text]).toEqual([201, expect.stringContaining('as it was exported')]);
+      expect(taken.plan).toMatchObject({
+        kind: 'assess',
+        contentHash,
+        recordHash,
+        resultHash: expect.stringMatching(/^[0-9a-f]{64}$/),
+      });
+      expect(taken.revisions[0]).toEqual({ siteId: id, number: 'P-0001', revision: 1, hasItsNumbers: true });
+      await server.upload(taken.id, (await file(`/records/${recordId}/export`)).bytes);
+      const again = (await judged(taken.id)).body;
+      expect(again.contentHash).toBe(contentHash);
+      const { body } = await server.ask('GET', `/api/sites/${taken.id}/revisions/1/plan`);
+      expect(body.frozen).toMatchObject({ contentHash, resultHash: taken.plan.resultHash });
+    },
+  );
+
+  it.each(FORMS)('say of a plan and a calculation sheet as %s of which revision they are', async (form) => {
+    for (const kind of ['plan', 'calculation']) {
+      const { bytes } = await file(`/revisions/1/${kind}?form=${form}`);
+      const body = await (await imported('/api/verify', bytes, TYPES[form]!)).json();
+      expect(body).toMatchObject({
+        standing: 'draft',
+        paper: { siteId: id, revision: 1 },
+        exported: { kind, contentHash },
+      });
+      expect(body).toMatchObject({
+        text: 'The numbers of P-0001, revision 1, which is draft, not reviewed. Not for construction.',
+      });
+    }
+  });
+
+  it('say that a value was changed, and take no such file back (control)', async () => {
+    const { bytes } = await file('/revisions/1/plan');
+    const [from, to] = ['"verdict":"avoid"', '"verdict":"clear"'];
+    const text = bytes.toString();
+    const altered = Buffer.from(text.includes(from!) ? text.replaceAll(from!, to!) : text.replaceAll(to!, from!));
+    const refused = await imported('/api/plan-imports', altered, 'application/json');
+    expect(refused.status).toBe(422);
+    expect(await refused.json()).toMatchObject({
+      code: 'inconsistent',
+      detail: expect.stringContaining('was changed after'),
+    });
+    const verified = await (await imported('/api/verify', altered, 'application/json')).json();
+    expect(verified).toMatchObject({ standing: 'altered', paper: { revision: 1 }, exported: { kind: 'plan' } });
+  });
+
+  it('say of a plan with a hash of its own where it is not the revision’s', async () => {
+    const { frozen, ...result } = JSON.parse((await file('/revisions/1/plan')).bytes.toString());
+    const forged = planDocument({ ...result, conductorMinA: result.conductorMinA + 1 }, frozen.inputs, sha256);
+    const body = await (await imported('/api/verify', Buffer.from(JSON.stringify(forged)), 'application/json')).json();
+    expect(body).toMatchObject({ standing: 'altered', paper: { revision: 1 } });
+    expect((body as { exported: object }).exported).toMatchObject({
+      differences: [{ path: 'conductorMinA', before: result.conductorMinA, after: result.conductorMinA + 1 }],
+    });
+    const sheet = calculationDocument({ figures: [{ ...result.figures[0], value: 1 }] }, contentHash, sha256);
+    const other = await (await imported('/api/verify', Buffer.from(JSON.stringify(sheet)), 'application/json')).json();
+    expect(other).toMatchObject({ standing: 'altered', exported: { kind: 'calculation' } });
+  });
+
+  it('know no plan of other inputs', async () => {
+    const { frozen, ...result } = JSON.parse((await file('/revisions/1/plan')).bytes.toString());
+    const elsewhere = planDocument(result, { ...frozen.inputs, engineVersion: '9.9.9' }, sha256);
+    const body = await (
+      await imported('/api/verify', Buffer.from(JSON.stringify(elsewhere)), 'application/json')
+    ).json();
+    expect(body).toMatchObject({ standing: 'unknown', paper: null, text: expect.stringMatching(/^Unknown: no plan/) });
+  });
+
+  it.each([
+    ['a calculation sheet', async () => (await file('/revisions/1/calculation')).bytes, 422, 'unknown-format'],
+    ['a site file', async () => (await file('/export')).bytes, 422, 'unknown-format'],
+    ['a meter file', async () => Buffer.from('time,kW\n'), 422, 'unknown-format'],
+    ['a later form', async () => Buffer.from('{"frozen":{"form":"plan 2"}}'), 422, 'not-supported-yet'],
+    ['nothing', async () => Buffer.alloc(0), 422, 'empty-file'],
+    ['too much', async () => Buffer.alloc(20_000_001, 0x7b), 413, 'too-large'],
+  ])('take no plan from %s, in words', async (_, bytes, status, code) => {
+    const answer = await imported('/api/plan-imports', await bytes(), 'application/octet-stream');
+    expect([answer.status, ((await answer.json()) as { code: string }).code]).toEqual([status, code]);
+  });
+
+  it('take a plan back once where it comes twice under one key', async () => {
+    const { bytes } = await file('/revisions/1/plan');
+    const send = () =>
+      fetch(`${server.base}/api/plan-imports`, {
+        method: 'POST',
+        headers: { 'content-type': 'application/json', 'idempotency-key': 'plan-once' },
+        body: new Uint8Array(bytes),
+      });
+    const [first, second] = [await send(), await send()];
+    expect(second.headers.get('idempotent-replayed')).toBe('true');
+    expect(((await first.json()) as Taken).id).toBe(((await second.json()) as Taken).id);
   });
 
   it('give the figures as drawings of the revision, the same at every time of asking', async () => {
@@ -162,6 +271,13 @@ describe('exports over HTTP', () => {
     expect(await other.json()).toMatchObject({ code: 'unknown-format' });
   });
 });
+
+interface Taken {
+  id: string;
+  text: string;
+  plan: { resultHash: string };
+  revisions: object[];
+}
 
 async function* once(bytes: Uint8Array): AsyncGenerator<Uint8Array> {
   yield bytes;

@@ -6,14 +6,17 @@ import {
   maintenanceChecks,
   type Outcome,
   overvoltageV,
+  type Result,
   type SettingName,
   withRobustness,
 } from '#libs/engine/index.js';
 import { controllerSheet } from '#libs/present/controller-sheet.js';
 import { maintenanceLines } from '#libs/present/maintenance-lines.js';
 import { operatorPage } from '#libs/present/operator-page.js';
+import { revisionNumbers } from '#libs/present/revision-numbers.js';
 import { scheduleOfMaterials } from '#libs/present/schedule-of-materials.js';
 import { missingParts, needIssuable } from '#libs/proposal/missing-parts.js';
+import type { ProposalFrame } from '#libs/proposal/proposal-frame.js';
 import { generatedCase } from '../support/generated-site.js';
 import { MADE_BANK, MADE_PLAIN_BANK, madeFrame, madeOutcome } from '../support/outcome.js';
 import { runs } from '../support/soak.js';
@@ -136,9 +139,71 @@ describe('a paper that is to be more than a draft', () => {
   it('is refused while a required part is empty, by its name', () => {
     expect(missingParts(outcome, frame)).toEqual([]);
     expect(() => needIssuable(outcome, frame)).not.toThrow();
-    expect(missingParts(outcome, { ...frame, preparedBy: '  ' })).toEqual(['prepared by']);
     expect(missingParts(made, frame)).toEqual(['sensitivity']);
     expect(() => needIssuable(made, frame)).toThrow(/sensitivity/);
+  });
+
+  const { result } = outcome;
+  const bare = { name: '', licence: 'L 1', jurisdiction: 'nowhere', date: '2026-01-31', capacity: '', statement: '' };
+  const signed = (signature: object) => ({
+    review: {
+      signatures: [{ ...bare, name: 'M. Okafor', ...signature }],
+      handChecks: [],
+      accepted: [],
+      ownApproval: null,
+    },
+  });
+  const unworked = (figure: Result['figures'][number]) => ({ ...figure, working: '' });
+  const emptied: [part: string, result: Partial<Result>, frame?: Partial<ProposalFrame>, outcome?: Partial<Outcome>][] =
+    [
+      ['number, engine version and content hash', {}, { contentHash: '7f3a' }],
+      ['number, engine version and content hash', {}, { number: ' ' }],
+      ['decision', {}, {}, { site: { ...outcome.site, name: ' \u200b' } }],
+      ['prepared by', {}, { preparedBy: '  ' }],
+      ['prepared by', {}, { preparedBy: null }],
+      ['checked and approved', {}, { state: 'approved' }],
+      ['checked and approved', {}, { state: 'approved', ...signed({ licence: '' }) }],
+      ['checked and approved', {}, { state: 'approved', ...signed({ jurisdiction: ' ' }) }],
+      ['assumptions', { assumptions: result.assumptions.map((line) => ({ ...line, text: '' })) }],
+      ['data quality', { record: { ...result.record, intervals: 0 } }],
+      ['method and working', { figures: result.figures.map((figure, at) => (at === 3 ? unworked(figure) : figure)) }],
+      ['stages', { bank: { ...result.bank, stages: [] } }],
+      ['protection', { devices: [] }],
+      ['discharge', { charge: { stages: [] } }],
+      ['network', { network: { ...result.network, levels: [] } }],
+      ['duties', { duties: [] }],
+      ['sensitivity', { robustness: null }],
+      ['limits of validity', { limits: { ...result.limits, points: [] } }],
+      ['hand check', { figures: result.figures.filter(({ id }) => !/^(network|bank)\./.test(id)) }],
+      ['cautions', { cautions: [] }],
+      ['revision history', {}, { revision: 3, history: [] }],
+    ];
+
+  it.each(emptied)('is refused without its part: %s', (part, changed, more = {}, beside = {}) => {
+    const without: Outcome = { ...outcome, ...beside, result: { ...result, ...changed } };
+    expect(missingParts(without, { ...frame, ...more })).toContain(part);
+    expect(() => needIssuable(without, { ...frame, ...more })).toThrow(`${part}, for a paper that may be issued`);
+    // as a draft it may go out
+    expect(() => needIssuable(without, { ...frame, ...more, state: 'draft, not reviewed' })).not.toThrow();
+  });
+
+  it('goes out signed, and as a third revision with its history', () => {
+    const past = {
+      revision: 1,
+      kind: 'plan',
+      date: null,
+      author: null,
+      reason: null,
+      contentHash: '',
+      engineVersion: '',
+    } as const;
+    const numbers = revisionNumbers(result);
+    const whole = { ...frame, state: 'approved', revision: 3, history: [{ ...past, numbers }], ...signed({}) } as const;
+    expect(missingParts(outcome, whole)).toEqual([]);
+  });
+
+  it('of a site where nothing is built needs no part of a bank', () => {
+    expect(missingParts(none, frame)).toEqual([]);
   });
 
   it('is refused while a finding blocks issue, and stays a draft', () => {

@@ -1,4 +1,17 @@
-import { file, fileBody, json, listOf, objectOf, open, type Part, query, schemaOf, text } from '../open-api-answers.js';
+import {
+  file,
+  fileBody,
+  json,
+  listOf,
+  nullable,
+  objectOf,
+  open,
+  type Part,
+  query,
+  schemaOf,
+  text,
+  whole,
+} from '../open-api-answers.js';
 
 const TABLES = [
   'application/json',
@@ -28,6 +41,24 @@ export const EXPORT_PARTS: Record<string, Part> = {
   'post /api/site-imports': {
     requestBody: fileBody(...TABLES.slice(1)),
     responses: { 201: json('The site.', schemaOf('StoredSite')) },
+  },
+  'post /api/plan-imports': {
+    requestBody: fileBody(...TABLES),
+    responses: {
+      201: json(
+        'The site of the plan, what the plan says of itself, and the revisions of equal inputs that stand here.',
+        objectOf({
+          ...{ id: text, name: text, version: whole, site: open, text },
+          plan: objectOf({
+            ...{ kind: text, contentHash: text, resultHash: text, recordHash: nullable(text) },
+            ...{ engineVersion: text, verdict: text },
+          }),
+          revisions: listOf(
+            objectOf({ siteId: text, number: text, revision: whole, hasItsNumbers: { type: 'boolean' } }),
+          ),
+        }),
+      ),
+    },
   },
   'get /api/demo/site.json': { responses: { 200: json('The site file of the example.', open) } },
   'get /api/demo/load.csv': { responses: { 200: file('The meter file of the example.', 'text/csv') } },

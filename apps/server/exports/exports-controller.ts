@@ -1,13 +1,17 @@
 import { Readable } from 'node:stream';
 import { Controller, Get, Param, Query, Res } from '@nestjs/common';
 import type { FastifyReply } from 'fastify';
+import { calculationDocument, planDocument } from '#libs/contract/plan-document.js';
+import type { PlanInputs } from '#libs/contract/plan-content.js';
 import { type EstimateResult, InputProblem, type Result } from '#libs/engine/index.js';
 import { keptRecordChunks } from '#libs/meter-files/kept-record/write-kept-record.js';
 import { calculationFile, planFile } from '#libs/meter-files/plan-file.js';
 import { documentFile } from '#libs/meter-files/site-document.js';
 import { TABLE_FORMS, type TableForm } from '#libs/meter-files/write-tables.js';
 import { calculationTable, planTables } from '#libs/present/result-tables.js';
+import { sha256 } from '#libs/store/audit-log.js';
 import { readRecord } from '#libs/store/records.js';
+import type { Revision } from '#libs/store/revision.js';
 import { Store } from '#libs/store/store.js';
 import { actorOf } from '../people/actor.js';
 import { Needs } from '../people/needs.js';
@@ -21,7 +25,7 @@ const TYPES: Record<TableForm, string> = {
   xlsx: 'application/vnd.openxmlformats-officedocument.spreadsheetml.sheet',
 };
 
-/** Site, record and plan as files; site and record are taken back with the same hash. */
+/** Site, record, plan and calculation sheet as files, each taken back with the same hash. */
 @Controller('api/sites/:siteId')
 export class ExportsController {
   constructor(private readonly store: Store) {}
@@ -51,29 +55,33 @@ export class ExportsController {
   }
 
   @Get('revisions/:revision/plan')
-  @Needs('viewer', 'Gives a plan with all its parts: ?form=json, csv (path, kind, value) or xlsx (a sheet a part).')
+  @Needs(
+    'viewer',
+    'Gives a plan with all its parts and its frozen inputs, to be taken back: ?form=json, csv (path, kind, value) or xlsx.',
+  )
   async plan(@Param() path: RevisionPath, @Query() query: object, @Res() reply: FastifyReply) {
-    return this.#ofRevision({ path, query, reply }, 'plan', (result, form) =>
-      planFile(result, planTables(result), form),
+    return this.#ofRevision({ path, query, reply }, 'plan', ({ inputs }, result, form) =>
+      planFile(planDocument(result, JSON.parse(inputs) as PlanInputs, sha256), planTables(result), form),
     );
   }
 
   @Get('revisions/:revision/calculation')
   @Needs('viewer', 'Gives the calculation sheet of a plan: every figure with formula, working and source.')
   async calculation(@Param() path: RevisionPath, @Query() query: object, @Res() reply: FastifyReply) {
-    return this.#ofRevision({ path, query, reply }, 'calculation', (result, form) =>
-      calculationFile(result.figures, calculationTable(result), form),
+    return this.#ofRevision({ path, query, reply }, 'calculation', ({ contentHash }, result, form) =>
+      calculationFile(calculationDocument(result, contentHash, sha256), calculationTable(result), form),
     );
   }
 
   async #ofRevision(
     { path, query, reply }: { path: RevisionPath; query: object; reply: FastifyReply },
     name: string,
-    fileOf: (result: Result | EstimateResult, form: TableForm) => Uint8Array | string,
+    fileOf: (revision: Revision, result: Result | EstimateResult, form: TableForm) => Uint8Array,
   ) {
     const revision = await findRevision(this.store, actorOf(reply.request), path);
     const form = formAsked(query);
-    return attached(reply, name, form).send(fileOf(JSON.parse(revision.result) as Result | EstimateResult, form));
+    const result = JSON.parse(revision.result) as Result | EstimateResult;
+    return attached(reply, name, form).send(fileOf(revision, result, form));
   }
 }
 

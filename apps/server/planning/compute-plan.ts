@@ -59,7 +59,7 @@ export function computePlan({ task, port }: { task: PlanTask; port: MessagePort 
     // A bank that stands there and is over a limit comes with what to do at once; such a paper stays a draft.
     const tonight = installedTonight(outcome, task.site);
     return {
-      result: isEstimate(outcome) || task.kind === 'plan' ? outcome.result : withTonight(outcome.result, tonight),
+      result: task.kind === 'plan' ? outcome.result : withTonight(outcome.result, tonight),
       proposed: isEstimate(outcome) ? estimateWords(outcome) : proposedWords(outcome),
       rival: rivalSummary(outcome),
       proposal: await renderProposal(outcome, { ...task.frame, tonight }),

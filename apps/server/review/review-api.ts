@@ -54,11 +54,17 @@ export const REVIEW_SCHEMAS: Record<string, object> = {
     required: ['standing', 'signedAfterwards', 'text', 'paper', 'faults', 'sha256'],
     properties: {
       ...{ signedAfterwards: { type: 'boolean' }, text, paper: nullable(open), faults: listOf(open), sha256: text },
+      exported: {
+        ...open,
+        description:
+          'of an exported plan or calculation sheet: kind, content hash, values that differ, how it was changed',
+      },
       standing: { type: 'string', enum: STANDINGS },
     },
   },
 };
 
+const WORKBOOK = 'application/vnd.openxmlformats-officedocument.spreadsheetml.sheet';
 const revision = '/api/sites/{siteId}/revisions/{revision}';
 const acts = ['submit', 'findings', 'hand-checks', 'comments', 'return', 'own-approval', 'approve', 'supersede'];
 
@@ -75,7 +81,7 @@ export const REVIEW_PARTS: Record<string, Part> = {
   [`get ${revision}/differences/{other}`]: answer('What differs.', schemaOf('Differences')),
   [`post ${revision}/again`]: answer('What the engine as it is makes of the same inputs, and what differs.', open),
   'post /api/verify': {
-    requestBody: fileBody('application/pdf'),
+    requestBody: fileBody('application/pdf', 'application/json', 'text/csv', WORKBOOK),
     ...answer('What the paper is worth.', schemaOf('VerifiedPaper')),
   },
   'get /api/verify': {

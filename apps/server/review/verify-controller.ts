@@ -2,16 +2,24 @@ import { readFile } from 'node:fs/promises';
 import { Controller, Get, HttpCode, Post, Query, Req, Res } from '@nestjs/common';
 import type { FastifyReply, FastifyRequest } from 'fastify';
 import { InputProblem } from '#libs/engine/index.js';
+import { type HeldExport, heldExport } from '#libs/meter-files/read-plan-file.js';
+import { exportWords } from '#libs/present/export-words.js';
+import { planTables } from '#libs/present/result-tables.js';
 import { numberWords, paperWords } from '#libs/present/review-words.js';
 import { contentNumber, MOST_PAPER_BYTES } from '#libs/review/paper-standing.js';
 import { Store } from '#libs/store/store.js';
-import { ofOrganisation, verifyNumber, verifyPaper } from '#libs/store/verify-paper.js';
+import { sha256 } from '#libs/store/audit-log.js';
+import { verifyExport } from '#libs/store/verify-export.js';
+import { ofOrganisation, type Seen, verifyNumber, verifyPaper } from '#libs/store/verify-paper.js';
 import { actorOf } from '../people/actor.js';
 import { Needs } from '../people/needs.js';
 import { Spool } from '../records/spool.js';
 import { VERIFY_SCRIPT, verifyPage } from './verify-page.js';
 
-/** Says what a paper is worth. */
+/** So many of the values that differ are told. */
+const MOST_DIFFERENCES = 200;
+
+/** Says what a paper, or an exported plan or calculation sheet, is worth. */
 @Controller()
 export class VerifyController {
   constructor(
@@ -35,7 +43,7 @@ export class VerifyController {
   @HttpCode(200)
   @Needs(
     'viewer',
-    'Says of a PDF whether it is approved as it stands, superseded, withdrawn, a draft, altered or unknown.',
+    'Says of a PDF, or of an exported plan or calculation sheet, whether it is approved, superseded, a draft, altered, …',
   )
   async file(@Req() request: FastifyRequest) {
     const { file } = await this.spool.receive(request);
@@ -46,6 +54,8 @@ export class VerifyController {
       }
       const bytes = await readFile(file.path);
       const seen = ofOrganisation(actorOf(request).organisationId);
+      const held = await heldExport(bytes, { hash: sha256, tablesOf: planTables });
+      if (held !== null) return { ...(await this.#ofExport(held, seen)), sha256: file.sha256 };
       const { paper, faults, ...answer } = await this.store.read((manager) => verifyPaper(manager, bytes, seen));
       const name = paper === null ? null : `${paper.number}, revision ${paper.revision}`;
       const { state = null, supersededBy = null } = paper ?? {};
@@ -54,6 +64,18 @@ export class VerifyController {
     } finally {
       await this.spool.discard(file);
     }
+  }
+
+  async #ofExport({ fault, ...held }: HeldExport, seen: Seen) {
+    const { kind, contentHash } = held;
+    const { differences, ...answer } = await this.store.read((manager) => verifyExport(manager, held, seen));
+    const { paper, faults } = answer;
+    const name = paper === null ? null : `${paper.number}, revision ${paper.revision}`;
+    const { state = null, supersededBy = null } = paper ?? {};
+    const told = { ...answer, kind, differences, fault, name, state, supersededBy };
+    const text = exportWords({ ...told, registerHolds: faults.length === 0 });
+    const exported = { kind, contentHash, differences: differences.slice(0, MOST_DIFFERENCES), fault };
+    return { ...answer, signedAfterwards: false, text, exported };
   }
 
   @Get('api/verify')

@@ -4,9 +4,9 @@ import { framedPage } from '../home/page-frame.js';
 /** The page a paper is dropped on. */
 export function verifyPage(): string {
   const main = html`<h1>Is this paper what was approved?</h1>
-<p>The file is compared with the issued paper to the last byte. A signature that was added afterwards is recognised.</p>
+<p>A PDF is compared with the issued paper to the last byte; a signature that was added afterwards is recognised. Of an exported plan or calculation sheet every value is compared.</p>
 <section aria-labelledby="file"><h2 id="file">A file</h2>
-<form id="paper"><div class="drop"><label><span>Drop the PDF here, or choose it</span><input type="file" name="file" accept="application/pdf,.pdf"></label></div></form>
+<form id="paper"><div class="drop"><label><span>Drop the file here, or choose it</span><input type="file" name="file" accept=".pdf,.json,.csv,.xlsx"></label></div></form>
 <p id="answer" role="status"></p></section>
 <section aria-labelledby="scan"><h2 id="scan">A scan or a print</h2>
 <p>Type the number behind “content” at the head of its pages. It names the plan; compare what the sheet shows with it.</p>

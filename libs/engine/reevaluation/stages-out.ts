@@ -2,7 +2,7 @@ import type { Verdict } from '../duty/rules.js';
 import type { BankInput } from '../layout/bank.js';
 import { effectiveKvar } from '../layout/stage.js';
 import { settleBank } from '../plan/settle-bank.js';
-import { type Ground, networkVerdict, type StagesVerdict, shortDevicesOf, withDevices } from './weigh-stages.js';
+import { type NetworkGround, networkVerdict, type StagesVerdict, shortDevicesOf, withDevices } from './weigh-stages.js';
 
 /** Stages to keep out, and what is left. */
 export interface StagesOut {
@@ -22,13 +22,13 @@ export interface StagesOut {
  * The least stages to keep out so that every level that is left is within limits: fewest stages, then least kvar, then
  * the first in order. Every choice of stages is looked at, except those that hold another already found wanting: what a
  * bank can do wrong with fewer stages it can do with more.
- * @param ground site, record and study
+ * @param ground site and its network
  * @param input the bank
  * @param atWorst the gravest verdict that will do
  * @returns the stages to keep out; all of them where nothing else will do, none where nothing need
  * @source method-reevaluation
  */
-export function leastStagesOut(ground: Ground, input: BankInput, atWorst: 'clear' | 'watch'): StagesOut {
+export function leastStagesOut(ground: NetworkGround, input: BankInput, atWorst: 'clear' | 'watch'): StagesOut {
   const search = new KeptSearch(ground, input, atWorst);
   search.seed();
   for (const kept of search.choices()) {
@@ -68,7 +68,7 @@ function outOf(search: KeptSearch, kept: readonly number[], found: StagesVerdict
 
 class KeptSearch {
   readonly input: BankInput;
-  readonly #ground: Ground;
+  readonly #ground: NetworkGround;
   readonly #atWorst: 'clear' | 'watch';
   readonly #stageKvar: number[];
   /** choices the network rules out */
@@ -76,7 +76,7 @@ class KeptSearch {
   /** devices that fall short with every stage in */
   readonly #short: Set<string>;
 
-  constructor(ground: Ground, input: BankInput, atWorst: 'clear' | 'watch') {
+  constructor(ground: NetworkGround, input: BankInput, atWorst: 'clear' | 'watch') {
     this.input = input;
     this.#ground = ground;
     this.#atWorst = atWorst;

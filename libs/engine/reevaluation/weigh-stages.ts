@@ -7,7 +7,7 @@ import { bankLevels } from '../layout/levels.js';
 import { effectiveKvar } from '../layout/stage.js';
 import { billYear } from '../money/bill.js';
 import { meetsTarget } from '../operation/operation.js';
-import { basisOf, judge, overallVerdict } from '../plan/judge-basis.js';
+import { basisOf, judge, type Judged, overallVerdict } from '../plan/judge-basis.js';
 import { type MoneyStudy, moneyStudy } from '../plan/money-study.js';
 import { setPointsOf } from '../plan/set-points.js';
 import { settleBank, settleControl } from '../plan/settle-bank.js';
@@ -16,9 +16,14 @@ import { operate, type Study, studySite } from '../plan/study.js';
 import type { LoadRecord } from '../record/load-record.js';
 import type { ZoneTable } from '../record/zone-table.js';
 
-/** A site, its record, and what does not depend on the bank. */
-export interface Ground {
+/** A site and its network without the bank, whatever the load is known from. */
+export interface NetworkGround {
   site: Site;
+  study: Judged;
+}
+
+/** A site, its record, and what does not depend on the bank. */
+export interface Ground extends NetworkGround {
   study: Study;
   money: MoneyStudy | null;
 }
@@ -59,12 +64,12 @@ export function groundOf(site: Site, record: LoadRecord, zone: ZoneTable): Groun
 
 /**
  * The verdict of a bank by the network alone.
- * @param ground site, record and study
+ * @param ground site and its network
  * @param input the bank
  * @returns the verdict and the worst duty
  * @source method-limits
  */
-export function networkVerdict(ground: Ground, input: BankInput): StagesVerdict {
+export function networkVerdict(ground: NetworkGround, input: BankInput): StagesVerdict {
   const { study, site } = ground;
   const { bank } = settleBank(input, site.frequencyHz);
   const { control } = settleControl(site.control, bank, study.site);
@@ -79,12 +84,12 @@ export function networkVerdict(ground: Ground, input: BankInput): StagesVerdict 
 
 /**
  * Devices of a bank that fall short of what it asks of them, of those that were entered.
- * @param ground site, record and study
+ * @param ground site and its network
  * @param input the bank
  * @returns rows, none for an empty bank
  * @source method-devices
  */
-export function shortDevicesOf({ study, site }: Ground, input: BankInput): DeviceRow[] {
+export function shortDevicesOf({ study, site }: NetworkGround, input: BankInput): DeviceRow[] {
   const { bank } = settleBank(input, site.frequencyHz);
   if (bank.groups.length === 0) return [];
   const { control } = settleControl(site.control, bank, study.site);

@@ -14,6 +14,10 @@ export const GERMAN_DOCUMENT_TEXTS: Readonly<Record<string, string>> = {
   what: 'was',
   '{0}, now {1}': '{0}, jetzt {1}',
   'Tonight: keep out {0}. {1}': 'Noch heute abgeschaltet zu halten: {0}. {1}',
+  'Tonight, by an estimate of the load: keep out {0}. {1}':
+    'Nach einer Schätzung der Last noch heute abgeschaltet zu halten: {0}. {1}',
+  'No meter’s record stands behind this: load that damps a resonance counts only where it is stated, and the load current is that of the distorting loads alone, the severe ends of both. With a record more may stay in; without one nothing more does.':
+    'Dahinter steht keine Messreihe: Last, die eine Resonanz dämpft, zählt nur, wo sie angegeben ist, und als Laststrom gilt der der verzerrenden Lasten allein, also jeweils das ungünstige Ende. Mit einer Messreihe darf vielleicht mehr zugeschaltet bleiben, ohne sie nicht.',
   'A qualified person switches them off, secures them against reconnection and waits out their discharge, as the section of cautions says; the controller must not be able to connect them.':
     'Eine Elektrofachkraft schaltet sie ab, sichert sie gegen Wiedereinschalten und wartet ihre Entladung ab, wie der Abschnitt Sicherheitshinweise es verlangt; der Regler darf sie nicht zuschalten können.',
   'They stay out until the bank is judged again and these are within limits: {0}.':
