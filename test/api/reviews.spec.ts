@@ -1,3 +1,4 @@
+// long: one review from its draft to its end, each step resting on the one before
 import { createHash } from 'node:crypto';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { dataSourceFor, readAddress } from '#libs/store/data-source.js';
@@ -122,6 +123,16 @@ for (const { name, available, create } of usualDatabases) {
       expect(await verify(changed)).toMatchObject({ standing: 'altered' });
       expect(await verify(Buffer.from('%PDF-1.7\n%%EOF\n'))).toMatchObject({ standing: 'unknown' });
       expect((await server.ask('DELETE', `/api/sites/${siteId}`)).status).toBe(409);
+    });
+
+    it('shows by a link to the revision where it stands, and gives what was approved', async () => {
+      const { path } = (await server.ask('POST', at(1, '/links'), { days: 7 })).body;
+      expect((await server.ask('GET', `/api${path}`)).body).toMatchObject({ revision: 1, state: 'approved' });
+      expect(await (await fetch(`${server.base}${path}`)).text()).toContain('It is approved.');
+      const given = (await server.ask('GET', `/api${path}/proposal.pdf`)).body as Buffer;
+      expect(given.equals(await paperOf(1))).toBe(true);
+      // the draft is another paper
+      expect(given.equals((await server.ask('GET', at(1, '/proposal.pdf'))).body)).toBe(false);
     });
 
     it('is found by the number typed from a scan', async () => {
