@@ -57,10 +57,9 @@ const REQUIRED: readonly { part: string; isFilled: Filled }[] = [
   },
   {
     part: 'maintenance',
-    // its reject values are those of the discharge, which is named above where it is empty
-    isFilled: ofBank((outcome) => outcome.result.charge.stages.length === 0 || maintenanceLines(outcome).length > 0),
+    isFilled: ofDischarged((outcome) => maintenanceLines(outcome).length > 0),
   },
-  { part: 'schedule of materials', isFilled: ofBank((outcome) => scheduleOfMaterials(outcome).length > 0) },
+  { part: 'schedule of materials', isFilled: ofDischarged((outcome) => scheduleOfMaterials(outcome).length > 0) },
   { part: 'revision history', isFilled: (_, { revision, history }) => revision <= 1 || (history ?? []).length > 0 },
 ];
 
@@ -117,4 +116,9 @@ function isSigned(review: ProposalFrame['review']): boolean {
 
 function ofBank(isFilled: (outcome: Outcome | EstimateOutcome) => boolean): Filled {
   return (outcome) => outcome.bank.groups.length === 0 || isFilled(outcome);
+}
+
+// What rests on the discharge is not told without it, and the discharge is a part of its own.
+function ofDischarged(isFilled: (outcome: Outcome | EstimateOutcome) => boolean): Filled {
+  return ofBank((outcome) => outcome.result.charge.stages.length === 0 || isFilled(outcome));
 }
