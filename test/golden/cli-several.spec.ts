@@ -1,6 +1,7 @@
 // Several sites in one call, how far a plan is, and an interruption while the bank that pays is searched for.
 import { spawn } from 'node:child_process';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import { minuteFile } from '../support/minute-file.js';
 import { buildProgram, meterCsv, PROGRAM, site, Workplace } from './cli-program.js';
 
 const MONEY = {
@@ -51,7 +52,8 @@ describe('plan', () => {
 
   it('says how far it is once a second has gone by, and ends at an interruption with its JSON', async () => {
     const file = work.file(site({ ...MONEY, catalogue: LARGE }));
-    const load = work.file(meterCsv(70), 'csv');
+    // seven months of minutes: no machine is through within the second
+    const load = work.file(minuteFile(300_000), 'csv');
     const program = spawn(process.execPath, [PROGRAM, 'plan', file, '--load', load, '--json']);
     let stdout = '';
     let stderr = '';
