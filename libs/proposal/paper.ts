@@ -34,6 +34,16 @@ export interface ElementOptions {
   bbox?: [number, number, number, number];
 }
 
+/** A heading that is drawn with what follows it. */
+interface WaitingHeading {
+  /** above it, unless it begins the page, and of itself with what is below it [pt] */
+  space: number;
+  height: number;
+  /** that must follow on the same page [pt] */
+  keep: number;
+  draw: () => void;
+}
+
 /** The page being written: its edges, the cursor, and the tree that tells a reading program what each part is. */
 export class Paper {
   readonly type: Typesetter;
@@ -43,8 +53,9 @@ export class Paper {
   readonly bottom: number;
   /** where the content of every page begins [pt] */
   top = 0;
-  /** where the next block begins, from the top [pt] */
-  y = 0;
+  private cursor = 0;
+  /** headings that wait for what follows them, so that they stand on its page */
+  private headings: WaitingHeading[] = [];
   private readonly parents: PDFKit.PDFStructureElement[];
 
   constructor(readonly doc: PDFKit.PDFDocument) {
@@ -58,6 +69,16 @@ export class Paper {
     this.parents = [root];
   }
 
+  /** where the next block begins, from the top [pt]; whoever asks has what waited drawn above it */
+  get y(): number {
+    this.settle();
+    return this.cursor;
+  }
+
+  set y(top: number) {
+    this.cursor = top;
+  }
+
   /** Sets where the content of every page begins, below the header. */
   begin(top: number): void {
     this.top = top;
@@ -66,6 +87,7 @@ export class Paper {
 
   /** Closes the tree. */
   end(): void {
+    this.settle();
     for (const element of this.parents) element.end();
   }
 
@@ -74,14 +96,24 @@ export class Paper {
     return this.bottom - this.y;
   }
 
-  /** Begins a new page unless the height wanted is left on this one. */
+  /** Begins a new page unless the height wanted is left on this one, below the headings that wait for it. */
   need(height: number): void {
-    if (height > this.rest && this.y > this.top) this.turn();
+    const waiting = this.headings;
+    this.headings = [];
+    const least = Math.max(height, waiting.at(-1)?.keep ?? 0);
+    const above = waiting.reduce((sum, heading, n) => sum + heading.height + (n > 0 ? heading.space : 0), 0);
+    const space = waiting[0]?.space ?? 0;
+    if (this.cursor > this.top && space + above + least > this.bottom - this.cursor) this.turn();
+    for (const heading of waiting) {
+      if (this.cursor > this.top) this.cursor += heading.space;
+      heading.draw();
+      this.cursor += heading.height;
+    }
   }
 
   turn(): void {
     this.doc.addPage();
-    this.y = this.top;
+    this.cursor = this.top;
   }
 
   /** Begins a new page for what may go out as a sheet of its own. */
@@ -89,8 +121,13 @@ export class Paper {
     if (this.y > this.top) this.turn();
   }
 
+  private settle(): void {
+    if (this.headings.length > 0) this.need(0);
+  }
+
   /** Runs `fill` with its blocks inside a structure element. */
   within(tag: string, fill: () => void): void {
+    this.settle();
     const element = this.doc.struct(tag);
     this.parents.at(-1)!.add(element);
     this.parents.push(element);
@@ -101,11 +138,13 @@ export class Paper {
 
   /** Marks what `draw` puts on this page as one structure element. */
   tagged(tag: string, draw: () => void, options: ElementOptions = {}): void {
+    this.settle();
     this.parents.at(-1)!.add(this.doc.struct(tag, options, [draw]));
   }
 
   /** Marks what `draw` puts on the page as decoration, which a reading program leaves out. */
   artifact(draw: () => void): void {
+    this.settle();
     this.doc.markContent('Artifact', { type: 'Layout' });
     draw();
     this.doc.endMarkedContent();
@@ -115,9 +154,8 @@ export class Paper {
   paragraph(pieces: readonly Piece[], setting: Setting = {}): void {
     const style = setting.style ?? BODY;
     const lines = this.type.wrap(pieces, style, setting.width ?? this.width);
+    this.need(Math.min(lines.length, 2) * leading(style));
     this.within(setting.tag ?? 'P', () => {
-      const least = Math.min(lines.length, 2) * leading(style);
-      this.need(least);
       let from = 0;
       while (from < lines.length) {
         const fitting = Math.max(1, Math.floor((this.rest + 0.01) / leading(style)));
@@ -145,24 +183,22 @@ export class Paper {
 
   /**
    * A numbered heading that stays with what follows it.
-   * @param keep height that must follow on the same page [pt]
+   * @param keep height that must follow on the same page where more is not asked for [pt]
    */
   heading(number: string, text: string, options: { level?: 2 | 3; keep?: number } = {}): void {
     const level = options.level ?? 2;
     const style: Style = { ...STRONG, size: level === 2 ? 13 : 10.6 };
     const indent = level === 2 ? 26 : 30;
     const lines = this.type.wrap([text], style, this.width - indent);
-    const height = lines.length * leading(style);
-    const space = level === 2 ? 16 : 9;
-    const atTop = this.y === this.top;
-    this.need((atTop ? 0 : space) + height + 6 + (options.keep ?? 54));
-    if (this.y > this.top) this.y += space;
-    if (level === 2) this.doc.outline.addItem(`${number} ${text}`);
-    this.tagged(`H${level}`, () => {
-      this.type.put([{ text: number, weight: 'regular', ink: SOFT }], style, this.left, this.y + RISE * style.size);
-      this.lines(lines, style, { x: this.left + indent, y: this.y });
-    });
-    this.y += height + (level === 2 ? 6 : 3);
+    const draw = () => {
+      if (level === 2) this.doc.outline.addItem(`${number} ${text}`);
+      this.tagged(`H${level}`, () => {
+        this.type.put([{ text: number, weight: 'regular', ink: SOFT }], style, this.left, this.y + RISE * style.size);
+        this.lines(lines, style, { x: this.left + indent, y: this.y });
+      });
+    };
+    const height = lines.length * leading(style) + (level === 2 ? 6 : 3);
+    this.headings.push({ space: level === 2 ? 16 : 9, height, keep: options.keep ?? 54, draw });
   }
 
   /** A horizontal rule at the cursor or at `y`. */

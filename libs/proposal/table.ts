@@ -85,12 +85,12 @@ export function drawTable(
     paper.rule({ from: first, to: last, width: STROKE.load, ink: INK });
   };
 
+  const set = rows.map((row) =>
+    row.map((cell, at) => setCell(paper, cell, cellStyle(style, columns[at]!), places[at]!)),
+  );
+  const heights = set.map((row) => Math.max(...row.map((cell) => cell.lines.length)) * leading(style) + 2 * padding);
+  paper.need(headHeight + (heights[0] ?? 0) + (heights[1] ?? 0));
   paper.within('Table', () => {
-    const set = rows.map((row) =>
-      row.map((cell, at) => setCell(paper, cell, cellStyle(style, columns[at]!), places[at]!)),
-    );
-    const heights = set.map((row) => Math.max(...row.map((cell) => cell.lines.length)) * leading(style) + 2 * padding);
-    paper.need(headHeight + (heights[0] ?? 0) + (heights[1] ?? 0));
     drawHead(true);
     set.forEach((row, n) => {
       if (heights[n]! > paper.rest && paper.y > paper.top + headHeight + 1) {

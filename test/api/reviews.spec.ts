@@ -128,7 +128,7 @@ for (const { name, available, create } of usualDatabases) {
     it('shows by a link to the revision where it stands, and gives what was approved', async () => {
       const { path } = (await server.ask('POST', at(1, '/links'), { days: 7 })).body;
       expect((await server.ask('GET', `/api${path}`)).body).toMatchObject({ revision: 1, state: 'approved' });
-      expect(await (await fetch(`${server.base}${path}`)).text()).toContain('It is approved.');
+      expect(await (await fetch(`${server.base}${path}`)).text()).toContain('Review: approved.');
       const given = (await server.ask('GET', `/api${path}/proposal.pdf`)).body as Buffer;
       expect(given.equals(await paperOf(1))).toBe(true);
       // the draft is another paper

@@ -23,7 +23,7 @@ export function linkedPage(revision: Revision, { state, expiresAt, base }: Linke
     html`<p>${kind === 'plan' ? 'Proposed' : 'Judged'}: ${proposed}</p>
 <p><span class="verdict ${verdict}">${VERDICT_WORDS[verdict]}</span></p>
 <p class="soft">${noPermission()}</p>
-<p>${author === null ? 'Made' : `Prepared by ${author}`} on ${day(createdAt)}. It is ${STATE_WORDS[state]}.</p>
+<p>${author === null ? 'Made' : `Prepared by ${author}`} on ${day(createdAt)}. Review: ${STATE_WORDS[state]}.</p>
 <ul class="links"><li><a href="${base}/proposal.pdf">Proposal (PDF)</a></li><li><a href="${base}">The same as JSON</a></li></ul>
 <p class="soft">This link shows this revision alone, until ${day(expiresAt)} or until it is revoked.</p>`,
   );

@@ -28,7 +28,7 @@ export interface LookAsked {
   depth: 'quick' | 'full';
 }
 
-/** How firm a verdict is: some sixty judgements, had once the hand has rested for longer. */
+/** How firm a verdict is, and its saving as a range: some sixty judgements, had once the hand has rested for longer. */
 export type Firmness = Pick<Result, 'assumptions' | 'reactorTrials' | 'robustness' | 'money'>;
 
 /** Charts of the open station; the others' are made when they are opened. */
