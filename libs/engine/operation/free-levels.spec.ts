@@ -3,12 +3,21 @@ import { type Chance, chance } from '../../../test/support/chance.js';
 import { runs, SEED } from '../../../test/support/soak.js';
 import { FreeLevels } from './free-levels.js';
 
-const classesOf = (sizes: [kvar: number, stages: number][]) =>
-  sizes.map(([kvar, stages]) => ({ kvar, stages: new Int32Array(stages) }));
+// What is never switched is no part of the choice; a whole number leaves every difference exact.
+const FIXED_KVAR = 20;
+
+const bankOf = (sizes: [kvar: number, stages: number][]) => ({
+  classes: sizes.map(([kvar, stages]) => ({ kvar, stages: new Int32Array(stages) })),
+  fixedKvar: FIXED_KVAR,
+});
 
 function chosen(sizes: [number, number][], wantedKvar: number, connected: number[]): number[] {
   const counts = new Int32Array(sizes.length);
-  FreeLevels.of({ classes: classesOf(sizes) }, 1e-9)!.chooseInto(counts, wantedKvar, Int32Array.from(connected));
+  FreeLevels.of(bankOf(sizes), 1e-9)!.chooseInto({
+    wantedKvar: wantedKvar + FIXED_KVAR,
+    connected: Int32Array.from(connected),
+    chosen: counts,
+  });
   return [...counts];
 }
 
@@ -130,7 +139,8 @@ describe('the nearest levels', () => {
       const switched = random.whole(1, 12);
       const wanted = random.whole(-40, 900) * 1.25;
       const chosenCounts = new Int32Array(sizes.length);
-      FreeLevels.of({ classes: classesOf(sizes) }, 1e-9)!.chooseReachableInto(wanted, {
+      FreeLevels.of(bankOf(sizes), 1e-9)!.chooseReachableInto({
+        wantedKvar: wanted + FIXED_KVAR,
         connected: Int32Array.from(connected),
         free: Int32Array.from(free),
         mostSwitchings: switched,
@@ -146,16 +156,14 @@ describe('the nearest levels', () => {
   it('of too many counts are left to be walked', () => {
     expect(
       FreeLevels.of(
-        {
-          classes: classesOf([
-            [50, 40],
-            [25, 40],
-          ]),
-        },
+        bankOf([
+          [50, 40],
+          [25, 40],
+        ]),
         1e-9,
       ),
     ).toBeNull();
-    expect(FreeLevels.of({ classes: [] }, 1e-9)).toBeNull();
+    expect(FreeLevels.of(bankOf([]), 1e-9)).toBeNull();
   });
 });
 

@@ -4,8 +4,16 @@ import type { SwitchedBank } from './switched-bank.js';
 /** Banks with more count vectors than this are walked instead. */
 const MOST_VECTORS = 1024;
 
+/** What all stages give is cut into so many parts a vector, so that few levels share one. */
+const PARTS_PER_VECTOR = 4;
+
+type SizedStages = Pick<SwitchedBank, 'classes' | 'fixedKvar'>;
+
 /** What a decision starts from and may do. */
 type Reach = Pick<Decision, 'connected' | 'free' | 'mostSwitchings'>;
+
+/** What a decision wants, from where, and where it is put. */
+type Choice = Pick<Decision, 'wantedKvar' | 'connected' | 'chosen'>;
 
 /**
  * Every count vector of a bank by its level, ascending: the nearest level that can be reached is looked up instead of
@@ -20,8 +28,15 @@ export class FreeLevels {
   /** counts of each vector, largest class first */
   readonly #counts: Uint8Array;
   readonly #tolerance: number;
+  readonly #fixedKvar: number;
+  /** first vector of a higher level than each one */
+  readonly #higher: Uint16Array;
+  /** first vector of each of equal parts of what all stages give, and of nothing beyond */
+  readonly #firstOfPart: Uint16Array;
+  readonly #partsPerKvar: number;
 
-  private constructor(classes: SwitchedBank['classes'], vectors: number, tolerance: number) {
+  private constructor({ classes, fixedKvar }: SizedStages, vectors: number, tolerance: number) {
+    this.#fixedKvar = fixedKvar;
     this.#classes = classes.length;
     this.#tolerance = tolerance;
     const levelKvar = new Float64Array(vectors);
@@ -46,6 +61,18 @@ export class FreeLevels {
         this.#counts[v * classes.length + c] = counts[order[v]! * classes.length + c]!;
       }
     }
+    this.#higher = new Uint16Array(vectors);
+    for (let v = vectors - 1; v >= 0; v--) {
+      const isLast = v + 1 === vectors || this.#levelKvar[v + 1]! > this.#levelKvar[v]!;
+      this.#higher[v] = isLast ? v + 1 : this.#higher[v + 1]!;
+    }
+    const parts = PARTS_PER_VECTOR * vectors;
+    this.#partsPerKvar = parts / this.#levelKvar[vectors - 1]!;
+    this.#firstOfPart = new Uint16Array(parts + 1);
+    for (let part = 0, v = 0; part <= parts; part++) {
+      while (v < vectors && Math.floor(this.#levelKvar[v]! * this.#partsPerKvar) < part) v++;
+      this.#firstOfPart[part] = v;
+    }
   }
 
   /**
@@ -54,22 +81,21 @@ export class FreeLevels {
    * @param tolerance levels no further apart are as near [kvar]
    * @returns null where there are too many, or none
    */
-  static of({ classes }: Pick<SwitchedBank, 'classes'>, tolerance: number): FreeLevels | null {
+  static of(bank: SizedStages, tolerance: number): FreeLevels | null {
+    const { classes } = bank;
     const count = classes.reduce((product, { stages }) => product * (stages.length + 1), 1);
     if (classes.length === 0 || count > MOST_VECTORS || classes.some(({ stages }) => stages.length > 255)) return null;
-    return new FreeLevels(classes, count, tolerance);
+    return new FreeLevels(bank, count, tolerance);
   }
 
   /**
    * Chooses among the vectors that can be reached: no class takes in more than is free, and all switch no more than they
    * may. The present vector is always one of them.
-   * @param wantedKvar what the switchable stages should come to [kvar]
-   * @param decision counts at present, free stages, most switchings; receives the counts
+   * @param decision what is wanted, counts at present, free stages, most switchings; receives the counts
    */
-  chooseReachableInto(
-    wantedKvar: number,
-    { connected, free, mostSwitchings, chosen }: Reach & Pick<Decision, 'chosen'>,
-  ): void {
+  chooseReachableInto(decision: Reach & Choice): void {
+    const { connected, free, mostSwitchings, chosen } = decision;
+    const wantedKvar = decision.wantedKvar - this.#fixedKvar;
     const levels = this.#levelKvar;
     const reach = { connected, free, mostSwitchings };
     const above = this.#firstFrom(wantedKvar);
@@ -116,11 +142,10 @@ export class FreeLevels {
 
   /**
    * Chooses where every stage is free.
-   * @param chosen receives the counts, largest class first
-   * @param wantedKvar what the switchable stages should come to [kvar]
-   * @param connected counts at present
+   * @param decision what is wanted, counts at present; receives the counts
    */
-  chooseInto(chosen: Int32Array, wantedKvar: number, connected: Int32Array): void {
+  chooseInto({ wantedKvar: inAllKvar, connected, chosen }: Choice): void {
+    const wantedKvar = inAllKvar - this.#fixedKvar;
     const levels = this.#levelKvar;
     const above = this.#firstFrom(wantedKvar);
     const offAbove = above < levels.length ? levels[above]! - wantedKvar : Number.POSITIVE_INFINITY;
@@ -139,16 +164,14 @@ export class FreeLevels {
     for (let c = 0; c < this.#classes; c++) chosen[c] = this.#counts[best * this.#classes + c]!;
   }
 
+  // The first level that is no lower: from the part it lies in one or two steps are left, where halving would take six.
   #firstFrom(kvar: number): number {
     const levels = this.#levelKvar;
-    let low = 0;
-    let high = levels.length;
-    while (low < high) {
-      const middle = (low + high) >> 1;
-      if (levels[middle]! < kvar) low = middle + 1;
-      else high = middle;
-    }
-    return low;
+    const lastPart = this.#firstOfPart.length - 1;
+    const part = Math.floor(kvar * this.#partsPerKvar);
+    let v = part <= 0 ? 0 : this.#firstOfPart[Math.min(part, lastPart)]!;
+    while (v < levels.length && levels[v]! < kvar) v = this.#higher[v]!;
+    return v;
   }
 
   #moves(v: number, connected: Int32Array): number {

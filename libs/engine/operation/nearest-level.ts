@@ -65,9 +65,8 @@ export class NearestLevel {
     if (voltageScale === 1) {
       if (this.#levels === undefined) this.#levels = FreeLevels.of(this.#bank, this.#tolerance);
       if (this.#levels !== null) {
-        const wantedKvar = this.#decision.wantedKvar - this.#fixedKvar;
-        if (this.#allAreFree()) this.#levels.chooseInto(chosen, wantedKvar, connected);
-        else this.#levels.chooseReachableInto(wantedKvar, this.#decision);
+        if (this.#allAreFree()) this.#levels.chooseInto(this.#decision);
+        else this.#levels.chooseReachableInto(this.#decision);
         return;
       }
     }

@@ -27,8 +27,7 @@ interface PeakMonth {
 
 /**
  * The greatest kVA of a demand over whole months, between two ends of the connected kvar. Active power stays as metered, so a
- * run of blocks that does not come to the greatest so far, with nothing connected nor with all, is passed over: of a year of
- * minutes few are looked at.
+ * run of blocks that comes to neither end of the greatest so far, with nothing connected nor with all, is passed over.
  */
 export class PeakBlocks {
   readonly #record: LoadRecord;
@@ -65,9 +64,14 @@ export class PeakBlocks {
     const squares = new Float64Array(2);
     for (let place = 0; place < order.length; place++) {
       const run = order[place]!;
-      const farKvar = Math.max(mostNetKvar[run]!, mostKvar - leastNetKvar[run]!);
-      if ((kwSquare[run]! + farKvar * farKvar) * (1 + SQUARE_SHARE) <= squares[0]!) continue;
+      const [mostNet, leastNet] = [mostNetKvar[run]!, leastNetKvar[run]!];
+      const nearKvar = columns === null ? Math.max(mostNet - mostKvar, -leastNet, 0) : Math.max(mostNet, -leastNet);
+      const farKvar = Math.max(mostNet, mostKvar - leastNet);
+      const near = (kwSquare[run]! + nearKvar * nearKvar) * (1 + SQUARE_SHARE);
+      const far = (kwSquare[run]! + farKvar * farKvar) * (1 + SQUARE_SHARE);
+      if (near <= squares[0]! && far <= squares[1]!) continue;
       if (columns === null) this.#constantInto(squares, month, run, mostKvar);
+      else if (month.blockFrom === null) this.#singlesInto(squares, month, run, columns);
       else this.#betweenInto(squares, month, run, columns);
     }
     return { lo: Math.sqrt(squares[0]!), hi: Math.sqrt(squares[1]!) };
@@ -92,6 +96,31 @@ export class PeakBlocks {
       net /= end - from;
       low = Math.max(low, square + nearestSquare(net - mostKvar, net));
       high = Math.max(high, square + farthestSquare(net - mostKvar, net));
+    }
+    squares[0] = low;
+    squares[1] = high;
+  }
+
+  // Blocks of single intervals, by comparisons that seldom hold: a search passes here most.
+  #singlesInto(squares: Float64Array, month: PeakMonth, run: number, { leastKvar, mostKvar }: ConnectedEnds): void {
+    const { activeKw, laggingKvar, leadingKvar } = this.#record;
+    const { intervals } = month;
+    const end = Math.min((run + 1) * RUN, month.blocks);
+    let low = squares[0]!;
+    let high = squares[1]!;
+    for (let b = run * RUN; b < end; b++) {
+      const i = intervals[b]!;
+      const kw = activeKw[i]!;
+      const net = laggingKvar[i]! - leadingKvar[i]!;
+      const netLo = net - mostKvar[i]!;
+      const netHi = net - leastKvar[i]!;
+      const square = kw * kw;
+      const atMost = square + netLo * netLo;
+      const atLeast = square + netHi * netHi;
+      if (atMost > high) high = atMost;
+      if (atLeast > high) high = atLeast;
+      // the nearest is no farther than either end
+      if (atMost > low && atLeast > low) low = Math.max(low, square + nearestSquare(netLo, netHi));
     }
     squares[0] = low;
     squares[1] = high;
