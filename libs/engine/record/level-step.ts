@@ -97,11 +97,14 @@ function pushPoint(side: Point[], at: number, value: number | undefined): void {
 
 /** Median of the slopes between all pairs: a few odd weeks don't turn it. */
 function slopeOf(side: readonly Point[]): number {
-  const slopes = side.flatMap((a, k) => side.slice(k + 1).map((b) => (b.value - a.value) / (b.at - a.at)));
-  return percentile(
-    slopes.sort((a, b) => a - b),
-    0.5,
-  );
+  const slopes = new Float64Array((side.length * (side.length - 1)) / 2);
+  let count = 0;
+  for (let a = 0; a < side.length; a++) {
+    for (let b = a + 1; b < side.length; b++) {
+      slopes[count++] = (side[b]!.value - side[a]!.value) / (side[b]!.at - side[a]!.at);
+    }
+  }
+  return percentile(slopes.sort(), 0.5);
 }
 
 // What only one side does is no drift of the whole.

@@ -55,60 +55,57 @@ export function stillRuns(columns: MeteredColumns): StillRuns {
 }
 
 function collectZeros(columns: MeteredColumns, runs: StillRuns): void {
-  const { activeKw, laggingKvar, leadingKvar, beginS, intervalS } = columns;
-  const n = beginS.length;
-  let from = 0;
-  let standing = 0;
-  for (let i = 0; i < n; i++) {
-    const state = (activeKw[i] === 0 ? 1 : 0) + (laggingKvar[i] === 0 && leadingKvar[i] === 0 ? 2 : 0);
-    if (state === standing && (standing === 0 || beginS[i]! - beginS[i - 1]! === intervalS)) continue;
-    pushZeros(runs, columns, { standing, from, to: i });
-    from = i;
-    standing = state;
-  }
-  pushZeros(runs, columns, { standing, from, to: n });
+  const { activeKw, laggingKvar, leadingKvar } = columns;
+  const stateAt = (i: number) => (activeKw[i] === 0 ? 1 : 0) + (laggingKvar[i] === 0 && leadingKvar[i] === 0 ? 2 : 0);
+  eachRun(columns, LEAST_HOURS['kW at 0'], {
+    isSame: (i) => stateAt(i) !== 0 && stateAt(i) === stateAt(i - 1),
+    take: (from, to) => runs[ZERO_KINDS[stateAt(from)]!].push(runOf(columns, from, to)),
+  });
 }
 
-const ZERO_KINDS = [null, 'kW at 0', 'kvar at 0', 'kW and kvar at 0'] as const;
-
-function pushZeros(
-  runs: StillRuns,
-  columns: MeteredColumns,
-  run: { standing: number; from: number; to: number },
-): void {
-  const kind = ZERO_KINDS[run.standing];
-  if (kind != null) pushRun(runs[kind], columns, run.from, run.to);
-}
+const ZERO_KINDS: Record<number, StillKind> = { 1: 'kW at 0', 2: 'kvar at 0', 3: 'kW and kvar at 0' };
 
 function collectStill(columns: MeteredColumns, runs: StillRuns): void {
-  const { activeKw, laggingKvar, leadingKvar, beginS, intervalS } = columns;
-  const n = beginS.length;
-  const endKw = (from: number, to: number) => {
-    if (to - from > 1 && activeKw[from] !== 0) pushRun(runs.kW, columns, from, to);
-  };
-  const endKvar = (from: number, to: number) => {
-    if (to - from > 1 && (laggingKvar[from] !== 0 || leadingKvar[from] !== 0)) pushRun(runs.kvar, columns, from, to);
-  };
-  let kwFrom = 0;
-  let kvarFrom = 0;
-  for (let i = 1; i < n; i++) {
-    const isBroken = beginS[i]! - beginS[i - 1]! !== intervalS;
-    if (isBroken || activeKw[i] !== activeKw[i - 1]) {
-      endKw(kwFrom, i);
-      kwFrom = i;
-    }
-    if (isBroken || laggingKvar[i] !== laggingKvar[i - 1] || leadingKvar[i] !== leadingKvar[i - 1]) {
-      endKvar(kvarFrom, i);
-      kvarFrom = i;
-    }
-  }
-  endKw(kwFrom, n);
-  endKvar(kvarFrom, n);
+  const { activeKw, laggingKvar, leadingKvar } = columns;
+  eachRun(columns, LEAST_HOURS.kW, {
+    isSame: (i) => activeKw[i] === activeKw[i - 1],
+    take: (from, to) => {
+      if (activeKw[from] !== 0) runs.kW.push(runOf(columns, from, to));
+    },
+  });
+  eachRun(columns, LEAST_HOURS.kvar, {
+    isSame: (i) => laggingKvar[i] === laggingKvar[i - 1] && leadingKvar[i] === leadingKvar[i - 1],
+    take: (from, to) => {
+      if (laggingKvar[from] !== 0 || leadingKvar[from] !== 0) runs.kvar.push(runOf(columns, from, to));
+    },
+  });
 }
 
-/** Runs under an hour, or of a single interval, are no run. */
-function pushRun(list: StillRun[], { beginS, intervalS }: MeteredColumns, from: number, to: number): void {
-  const intervals = to - from;
-  if (intervals < 2 || intervals * intervalS < HOUR_S) return;
-  list.push({ beginS: beginS[from]!, endS: beginS[to - 1]! + intervalS, intervals });
+/**
+ * Takes every run of like intervals without a gap, from first to behind its last, that lasts half the least length or
+ * longer: what is shorter is neither long nor a habit that makes a long one usual. Of the steps within a run of `least`
+ * intervals one stands at a multiple of least − 1: the others are looked at only around a like pair.
+ */
+function eachRun(
+  { beginS, intervalS }: MeteredColumns,
+  leastHours: number,
+  { isSame, take }: { isSame: (i: number) => boolean; take: (from: number, to: number) => void },
+): void {
+  const n = beginS.length;
+  const goesOn = (i: number) => isSame(i) && beginS[i]! - beginS[i - 1]! === intervalS;
+  const least = Math.max(2, Math.floor((leastHours * HOUR_S) / BEYOND_HABIT / intervalS));
+  const stride = least - 1;
+  for (let i = stride; i < n; i += stride) {
+    if (!goesOn(i)) continue;
+    let from = i - 1;
+    while (from > 0 && goesOn(from)) from--;
+    let to = i + 1;
+    while (to < n && goesOn(to)) to++;
+    if (to - from >= least) take(from, to);
+    i = Math.floor(to / stride) * stride;
+  }
+}
+
+function runOf({ beginS, intervalS }: MeteredColumns, from: number, to: number): StillRun {
+  return { beginS: beginS[from]!, endS: beginS[to - 1]! + intervalS, intervals: to - from };
 }

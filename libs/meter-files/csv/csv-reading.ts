@@ -36,6 +36,7 @@ export function readUnder(file: CsvFile, meaning: CsvMeaning, room: Float64Array
   const ordered = {
     intervalS: grid.intervalS,
     kept: found.kept,
+    isEveryRow: grid.isEveryRow && found.kept === kept,
     utcS: moments.utcS,
     shiftS: ends ? grid.intervalS : 0,
     rowNumber,
@@ -108,7 +109,8 @@ export function placedRows(
     // dates are not looked at again where the rows are placed once
     const once = only && (rules.mark !== null || moments.zone.offsetS.length === 1);
     const spare = once ? rows.dateKey : undefined;
-    const moment = { utcS: moments.utcS, rowNumber: rows.rowNumber, agree, spanS: rows.spanS, spare };
+    const { utcS, stepS } = moments;
+    const moment = { utcS, rowNumber: rows.rowNumber, agree, spanS: rows.spanS, stepS, spare };
     return { moments, skipped, grid: gridRows(moment, keep) };
   };
   const first = placed(rules.mark === 'end');

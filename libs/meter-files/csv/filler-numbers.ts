@@ -51,13 +51,19 @@ export function fillerNotes({ taken, value, columns }: FillerNumbers, { names }:
   return [note('fillers-left-out', { values: taken, value, columns: listed })];
 }
 
-/** A plain loop, since every file passes it: a call for each number takes ten times as long. */
+/** Every file passes it: four small numbers at a time are passed over, which takes half as long as one by one. */
 function holdsFiller(values: Float64Array): boolean {
-  for (let row = 0; row < values.length; row++) {
-    const value = values[row]!;
-    if ((value >= LEAST || value <= -LEAST) && FILLERS.has(Math.abs(value))) return true;
+  const n = values.length;
+  for (let row = 0; row < n; row++) {
+    while (row + 3 < n && isSmall(values[row]!, values[row + 1]!) && isSmall(values[row + 2]!, values[row + 3]!))
+      row += 4;
+    if (row < n && isFiller(values[row]!)) return true;
   }
   return false;
+}
+
+function isSmall(a: number, b: number): boolean {
+  return a < LEAST && a > -LEAST && b < LEAST && b > -LEAST;
 }
 
 function isFiller(value: number): boolean {

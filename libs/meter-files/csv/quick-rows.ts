@@ -5,11 +5,9 @@ import { TENTHS } from './number-cell.js';
 import type { RowBuffer } from './row-buffer.js';
 import type { RowCells } from './row-cells.js';
 
-/** What is done with a column; from NUMBER on its number is kept in column `action − NUMBER` of the rows. */
+/** What is done with a column behind the stamps; from NUMBER on its number is kept in column `action − NUMBER` of the rows. */
 const PASS = 0;
-const STAMP = 1;
-const END = 2;
-const NUMBER = 4;
+const NUMBER = 1;
 
 const LF = 0x0a;
 const CR = 0x0d;
@@ -56,10 +54,10 @@ export interface QuickPlan {
   delimiter: number;
   /** number of columns */
   width: number;
-  /** columns of the stamp, and of the interval's end or −1; counted from 0 */
+  /** columns of the stamp, and of the interval's end right behind it or −1; counted from 0 */
   stamp: number;
   end: number;
-  /** columns of numbers, in the order of the rows' values */
+  /** columns of numbers, all of them behind the stamps, in the order of the rows' values */
   columns: readonly number[];
 }
 
@@ -92,8 +90,6 @@ export class QuickRows {
     plan.columns.forEach((column, k) => {
       this.#actions[column] = NUMBER + k;
     });
-    this.#actions[plan.stamp] = STAMP;
-    if (plan.end >= 0) this.#actions[plan.end] = END;
   }
 
   /**
@@ -134,72 +130,74 @@ export class QuickRows {
   // biome-ignore lint/complexity/noExcessiveCognitiveComplexity: the kernel that every byte of a usual file runs through
   // biome-ignore lint/complexity/noExcessiveLinesPerFunction: the same
   #takeTurn(buffer: RowBuffer, form: StampForm, limit: number, markByte: number): boolean {
-    const { delimiter, width } = this.#plan;
+    const { delimiter, width, stamp, end } = this.#plan;
     const { bytes, view } = buffer;
     const actions = this.#actions;
     const { dateKey: dateKeys, clockS: clocks, rowNumber: rowNumbers, offsetS: offsets, values } = this.#rows;
     const { count } = this.#rows;
     const room = Math.min(rowNumbers.length, count + TURN_ROWS);
     const spanS = this.#rows.spanS;
+    const stampBytes = form.bytes.length;
+    const behindStamps = (end < 0 ? stamp : end) + 1;
     let at = buffer.start;
     let index = count;
     let rowNumber = buffer.rowsBefore;
     for (; index < room && at < limit; index++) {
-      let dateKey = -1;
-      let clockS = 0;
-      let endKey = -1;
-      let endS = 0;
       let to = at;
       let column = 0;
-      for (; column < width; column++) {
+      for (; column < stamp; column++) {
+        if (bytes[to] === QUOTE) break;
+        while (bytes[to] !== delimiter && bytes[to] !== LF) to++;
+        if (bytes[to] !== delimiter) break;
+        to++;
+      }
+      if (column < stamp || to + stampBytes > limit) break;
+      if (!this.#isSameHour(view, to, form) && !this.#isStampAt(bytes, view, to, form)) break;
+      const dateKey = this.#dateKey;
+      const clockS = this.#clockS;
+      to += stampBytes;
+      if (end >= 0) {
+        if (bytes[to] !== delimiter || to + 1 + stampBytes > limit) break;
+        to++;
+        if (!this.#isSameHour(view, to, form) && !this.#isStampAt(bytes, view, to, form)) break;
+        if (this.#dateKey !== dateKey || this.#clockS - clockS !== spanS) break;
+        to += stampBytes;
+      }
+      for (column = behindStamps; column < width; column++) {
+        if (bytes[to] !== delimiter) break;
+        to++;
         const action = actions[column]!;
-        if (action >= NUMBER) {
-          const negative = bytes[to] === MINUS;
-          if (negative) to++;
-          const from = to;
-          let digits = 0;
-          // more than nine digits leave the 32 bits, and are left to the general reader
+        if (action === PASS) {
+          if (bytes[to] === QUOTE) break;
+          while (bytes[to] !== delimiter && bytes[to] !== LF) to++;
+          continue;
+        }
+        const negative = bytes[to] === MINUS;
+        if (negative) to++;
+        const from = to;
+        let digits = 0;
+        // more than nine digits leave the 32 bits, and are left to the general reader
+        for (let digit = bytes[to]! - ZERO; digit >= 0 && digit <= 9; digit = bytes[++to]! - ZERO) {
+          digits = (Math.imul(digits, 10) + digit) | 0;
+        }
+        let length = to - from;
+        let tenths = 0;
+        if (bytes[to] === markByte) {
+          const behind = ++to;
           for (let digit = bytes[to]! - ZERO; digit >= 0 && digit <= 9; digit = bytes[++to]! - ZERO) {
             digits = (Math.imul(digits, 10) + digit) | 0;
           }
-          let count = to - from;
-          let tenths = 0;
-          if (bytes[to] === markByte) {
-            const behind = ++to;
-            for (let digit = bytes[to]! - ZERO; digit >= 0 && digit <= 9; digit = bytes[++to]! - ZERO) {
-              digits = (Math.imul(digits, 10) + digit) | 0;
-            }
-            tenths = to - behind;
-            if (tenths === 0) break;
-            count += tenths;
-          }
-          if (count === 0 || count > MOST_DIGITS) break;
-          const value = digits / TENTHS[tenths]!;
-          values[action - NUMBER]![index] = negative && digits !== 0 ? -value : value;
-        } else if (action === PASS) {
-          if (bytes[to] === QUOTE) break;
-          while (bytes[to] !== delimiter && bytes[to] !== LF) to++;
-        } else {
-          if (to + form.bytes.length > limit) break;
-          if (!this.#isSameHour(view, to, form) && !this.#isStampAt(bytes, view, to, form)) break;
-          to += form.bytes.length;
-          if (action === STAMP) {
-            dateKey = this.#dateKey;
-            clockS = this.#clockS;
-          } else {
-            endKey = this.#dateKey;
-            endS = this.#clockS;
-          }
+          tenths = to - behind;
+          if (tenths === 0) break;
+          length += tenths;
         }
-        if (column < width - 1) {
-          if (bytes[to] !== delimiter) break;
-          to++;
-        }
+        if (length === 0 || length > MOST_DIGITS) break;
+        const value = digits / TENTHS[tenths]!;
+        values[action - NUMBER]![index] = negative && digits !== 0 ? -value : value;
       }
       if (column < width) break;
       if (bytes[to] === CR) to++;
       if (bytes[to] !== LF) break;
-      if (endKey >= 0 && (endKey !== dateKey || endS - clockS !== spanS)) break;
       dateKeys[index] = dateKey;
       clocks[index] = clockS;
       if (offsets !== null) offsets[index] = form.offsetS;

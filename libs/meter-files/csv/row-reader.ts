@@ -59,11 +59,17 @@ export class RowReader implements ReadRows {
     this.#lenient = new Set(this.columns.filter((column) => !inAll(column)));
   }
 
-  /** What the quick lane may do for this file, or null where it needs the general one: states, qualities, meters, serial dates, a clock time apart. */
+  /**
+   * What the quick lane may do for this file, or null where it needs the general one: states, qualities, meters, serial
+   * dates, a clock time apart, numbers before the stamp.
+   */
   quickPlan(): QuickPlan | null {
     const { time, names, delimiter, side } = this.#layout;
     if (time.clock >= 0 || time.serial || time.epoch || this.#standby.size > 0) return null;
     if (side.meter.length + side.quality.length > 0) return null;
+    if (time.end >= 0 && time.end !== time.stamp + 1) return null;
+    const behind = Math.max(time.stamp, time.end);
+    if (this.columns.some((column) => column < behind)) return null;
     return { delimiter, width: names.length, stamp: time.stamp, end: time.end, columns: this.columns };
   }
 

@@ -103,7 +103,8 @@ function placedRows(
   ];
   const season = seasonClock(zone, clock);
   const utcS = seasonMoments({ clock, summer: values[FLAG]!, rowNumber }, season);
-  const moments: Moments = { utcS, clockAt: (row) => clock[row]!, newestFirst, zone: season.table, notes };
+  const clockAt = (row: number) => clock[row]!;
+  const moments: Moments = { utcS, clockAt, newestFirst, stepS: Number.NaN, skips: true, zone: season.table, notes };
   const energies = values.slice(0, FLAG);
   const grid = gridRows({ utcS, rowNumber, agree: sameIn(energies), spanS: Number.NaN }, keep);
   const bounds = { first: grid.kept[0]!, last: grid.kept.at(-1)!, intervalS: grid.intervalS };

@@ -47,6 +47,8 @@ export interface OrderedRows {
   intervalS: number;
   /** rows of the file in time order */
   kept: Int32Array;
+  /** they are known to be all rows, as they stand in the file */
+  isEveryRow?: boolean;
   /** moment of each row of the file, UTC [s], and how far the beginning of its interval lies before it [s] */
   utcS: Float64Array;
   shiftS: number;
@@ -129,9 +131,27 @@ function validRows(kept: Int32Array, sources: readonly QuantitySource[]): Int32A
 }
 
 function hasGap(kept: Int32Array, values: Float64Array): boolean {
-  if (!values.includes(Number.NaN)) return false;
+  if (!hasNaN(values)) return false;
   for (let i = 0; i < kept.length; i++) if (Number.isNaN(values[kept[i]!]!)) return true;
   return false;
+}
+
+/** A sum shows it, four of them in a third of the time that comparing takes; so does a sum of opposite infinities. */
+function hasNaN(values: Float64Array): boolean {
+  const n = values.length;
+  let a = 0;
+  let b = 0;
+  let c = 0;
+  let d = 0;
+  let i = 0;
+  for (; i + 3 < n; i += 4) {
+    a += values[i]!;
+    b += values[i + 1]!;
+    c += values[i + 2]!;
+    d += values[i + 3]!;
+  }
+  for (; i < n; i++) a += values[i]!;
+  return Number.isNaN(a + b + c + d);
 }
 
 function beginnings(rows: OrderedRows, valid: Int32Array): Float64Array {
@@ -156,7 +176,8 @@ function picked(
   valid: Int32Array,
 ): Float64Array {
   const fits = values.buffer.byteLength <= MOST_ROOM * valid.length * values.BYTES_PER_ELEMENT;
-  if (fits && isEveryRow(valid, values.length)) return values;
+  const { kept, isEveryRow = false } = rows;
+  if (fits && ((isEveryRow && valid === kept) || isEveryOf(valid, values.length))) return values;
   const column = fits && spare && isAscending(valid) ? values.subarray(0, valid.length) : freshOf(rows)(valid.length);
   for (let i = 0; i < valid.length; i++) column[i] = values[valid[i]!]!;
   return column;
@@ -168,7 +189,7 @@ function isAscending(rows: Int32Array): boolean {
   return true;
 }
 
-function isEveryRow(valid: Int32Array, rows: number): boolean {
+function isEveryOf(valid: Int32Array, rows: number): boolean {
   if (valid.length !== rows) return false;
   for (let i = 0; i < rows; i++) if (valid[i] !== i) return false;
   return true;

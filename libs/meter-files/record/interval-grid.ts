@@ -14,6 +14,8 @@ export interface MomentRows {
   agree: (a: number, b: number) => boolean;
   /** length of the interval where the file states it [s]; NaN where it has to be found */
   spanS: number;
+  /** how long after the row before it every row stands, where that is known already [s] */
+  stepS?: number;
   /** room that nobody needs any more, for the order of the rows */
   spare?: Int32Array | undefined;
 }
@@ -60,7 +62,7 @@ export class ConflictingRows extends InputProblem {
  * @throws InputProblem where intervals are of different lengths, or there are fewer than two
  */
 export function gridRows(rows: MomentRows, keep: 'first' | 'last' | undefined): IntervalGrid {
-  if (isRegular(rows.utcS, rows.spanS)) {
+  if (isRegular(rows)) {
     const { utcS, spare } = rows;
     refuseLongInterval(rows.rowNumber[1]!, utcS[1]! - utcS[0]!);
     let listed: Int32Array | undefined;
@@ -93,9 +95,10 @@ function refuseLongInterval(row: number, intervalS: number): void {
 }
 
 /** Most files: every row one interval after the row before it. */
-function isRegular(utcS: Float64Array, spanS: number): boolean {
+function isRegular({ utcS, spanS, stepS: knownS }: MomentRows): boolean {
   const stepS = utcS[1]! - utcS[0]!;
   if (!(stepS > 0) || (spanS !== stepS && !Number.isNaN(spanS))) return false;
+  if (stepS === knownS) return true;
   for (let i = 1; i < utcS.length; i++) if (utcS[i]! - utcS[i - 1]! !== stepS) return false;
   return true;
 }

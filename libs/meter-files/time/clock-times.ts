@@ -56,11 +56,17 @@ export interface FileOrder {
  * @param clock times as written, in file order; changed where midnights are moved
  * @param rows the rows they belong to
  * @param movable false where the stamps are said to mark beginnings
+ * @param steady see isSteady
  * @returns what was found
  * @throws InputProblem where some midnights end a day and others begin one
  */
-export function orderRows(clock: Float64Array, rows: StampedRows, movable: boolean): FileOrder {
-  if (isSteady(clock)) return { newestFirst: false, movedMidnights: 0 };
+export function orderRows(
+  clock: Float64Array,
+  rows: StampedRows,
+  movable: boolean,
+  steady = isSteady(clock),
+): FileOrder {
+  if (steady) return { newestFirst: false, movedMidnights: 0 };
   const newestFirst = isNewestFirst(clock);
   const found = movable ? midnights(clock, rows, newestFirst) : null;
   const orderly = found !== null && found.descents <= 2 + clock.length / 100;
@@ -76,11 +82,26 @@ export function orderRows(clock: Float64Array, rows: StampedRows, movable: boole
   return { newestFirst, movedMidnights };
 }
 
-/** Most files: every row one step after the row before it, so that each midnight begins its day. */
-function isSteady(clock: Float64Array): boolean {
+/**
+ * Most files: every row one step after the row before it, so that each midnight begins its day.
+ * @param clock times as written, in file order [s]
+ */
+export function isSteady(clock: Float64Array): boolean {
   const stepS = clock[1]! - clock[0]!;
   if (!(stepS > 0 && stepS < DAY_S)) return false;
-  for (let i = 1; i < clock.length; i++) if (clock[i]! - clock[i - 1]! !== stepS) return false;
+  const n = clock.length;
+  let i = 1;
+  let before = clock[0]!;
+  // four at a time, which takes half as long as one by one
+  for (; i + 3 < n; i += 4) {
+    const a = clock[i]!;
+    const b = clock[i + 1]!;
+    const c = clock[i + 2]!;
+    const d = clock[i + 3]!;
+    if (a - before !== stepS || b - a !== stepS || c - b !== stepS || d - c !== stepS) return false;
+    before = d;
+  }
+  for (; i < n; i++) if (clock[i]! - clock[i - 1]! !== stepS) return false;
   return true;
 }
 

@@ -1,7 +1,7 @@
 import { zoneTable } from '#libs/contract/time-zone.js';
 import { InputProblem, offsetAtS, type Remark, UTC_TABLE, type ZoneTable } from '#libs/engine/index.js';
 import { note } from '../note.js';
-import { clockTimes, orderRows } from './clock-times.js';
+import { clockTimes, isSteady, orderRows } from './clock-times.js';
 import { describeDate } from './date-orders.js';
 import { elapsedMoments } from './elapsed-days.js';
 import { localToUtc } from './local-times.js';
@@ -33,6 +33,10 @@ export interface Moments {
   clockAt: (row: number) => number;
   /** rows stand newest first */
   newestFirst: boolean;
+  /** how long after the row before it every row stands [s]; NaN where that is not known to be one length */
+  stepS: number;
+  /** false where every row has a moment */
+  skips: boolean;
   zone: ZoneTable;
   notes: Remark[];
 }
@@ -48,22 +52,25 @@ export interface Moments {
 export function momentsOf(rows: StampedRows, rules: StampRules, ends: boolean): Moments {
   const clock = clockTimes(rows, rules.order, rules.room);
   if (rows.offsetS !== null) return ownMoments(clock, rows.offsetS);
-  const zone = zoneOver(rules.zone ?? 'UTC', clock);
+  const steady = isSteady(clock);
+  const zone = zoneOver(rules.zone ?? 'UTC', clock, steady);
+  const oneOffset = zone.offsetS.length === 1;
   const notes: Remark[] = [];
   if (rules.zone === null) notes.push(note('zone-assumed-utc', {}));
   else if (rules.zoneFromHeader) notes.push(note('zone-from-header', { zone: rules.zone }));
   if (rules.elapsed) {
     const passedS = rows.clockS.subarray(0, rows.count);
     const utcS = elapsedMoments(clock, passedS, zone);
-    return { utcS, clockAt: clockIn(utcS, zone), newestFirst: false, zone, notes };
+    return { utcS, clockAt: clockIn(utcS, zone), newestFirst: false, stepS: Number.NaN, skips: true, zone, notes };
   }
-  const { newestFirst, movedMidnights } = orderRows(clock, rows, rules.mark !== 'begin');
+  const { newestFirst, movedMidnights } = orderRows(clock, rows, rules.mark !== 'begin', steady);
   const { utcS, doubledRows, onceRows } = localToUtc(clock, newestFirst, zone, ends || movedMidnights > 0);
   if (newestFirst) notes.push(note('rows-newest-first', { rows: rows.count }));
   if (movedMidnights > 0) notes.push(note('midnight-under-ending-day', { rows: movedMidnights }));
   if (doubledRows > 0) notes.push(note('doubled-hour-by-order', { rows: doubledRows }));
   if (onceRows > 0) notes.push(note('doubled-hour-once', { rows: onceRows }));
-  return { utcS, clockAt: clockIn(utcS, zone), newestFirst, zone, notes };
+  const stepS = steady && oneOffset ? utcS[1]! - utcS[0]! : Number.NaN;
+  return { utcS, clockAt: clockIn(utcS, zone), newestFirst, stepS, skips: !oneOffset, zone, notes };
 }
 
 function clockIn(utcS: Float64Array, zone: ZoneTable): Moments['clockAt'] {
@@ -73,10 +80,11 @@ function clockIn(utcS: Float64Array, zone: ZoneTable): Moments['clockAt'] {
 function ownMoments(utcS: Float64Array, offsetS: Int32Array): Moments {
   for (let i = 0; i < utcS.length; i++) utcS[i]! -= offsetS[i]!;
   const clockAt = (row: number) => utcS[row]! + offsetS[row]!;
-  return { utcS, clockAt, newestFirst: false, zone: UTC_TABLE, notes: [] };
+  return { utcS, clockAt, newestFirst: false, stepS: Number.NaN, skips: false, zone: UTC_TABLE, notes: [] };
 }
 
-function zoneOver(zone: string, clock: Float64Array): ZoneTable {
+function zoneOver(zone: string, clock: Float64Array, steady: boolean): ZoneTable {
+  if (steady) return zoneTable(zone, clock[0]! - 2 * DAY_S, clock[clock.length - 1]! + 2 * DAY_S);
   let fromS = Number.POSITIVE_INFINITY;
   let toS = Number.NEGATIVE_INFINITY;
   for (let i = 0; i < clock.length; i++) {
@@ -120,7 +128,7 @@ export function showsEnds(
  * @throws InputProblem naming the row
  */
 export function skippedRows(rows: StampedRows, moments: Moments, holdsValue: (row: number) => boolean): number {
-  if (!moments.utcS.includes(Number.NaN)) return 0;
+  if (!moments.skips || !moments.utcS.includes(Number.NaN)) return 0;
   let skipped = 0;
   for (let i = 0; i < rows.count; i++) {
     if (!Number.isNaN(moments.utcS[i]!)) continue;
