@@ -114,6 +114,8 @@ const byOnes: Row[] = [
     [3, 1],
     'steps of 25 and 12.5 at 71 %, the threshold stays',
   ],
+  [{ wantedKvar: 80, connected: [1, 1], free: [2, 1], voltageScale: 0 }, [1, 1], 'on a dead bus none brings anything'],
+  [{ wantedKvar: -80, connected: [1, 1], free: [2, 1], voltageScale: 0 }, [1, 1], 'nor does it out of one'],
 ];
 
 describe('one by one', () => {

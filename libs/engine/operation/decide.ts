@@ -23,7 +23,8 @@ export interface Decision {
 
 /**
  * `oneByOne`: while d > a·q_min connect the largest free q with d − q ≥ −a·q_min; while d < −a·q_min disconnect the
- * largest connected q with d + q ≤ a·q_min; what was disconnected in the interval is not connected in it.
+ * largest connected q with d + q ≤ a·q_min; what was disconnected in the interval is not connected in it. On a dead bus
+ * no stage changes d, and nothing is switched.
  * @param bank the controller's view of the bank
  * @param decision state of the interval; `chosen` is filled
  * @source method-controller
@@ -32,6 +33,7 @@ export function oneByOneInto(bank: SwitchedBank, decision: Decision): void {
   const { connected, chosen, bandKvar, voltageScale, wantedKvar } = decision;
   const tolerance = COMPARISON_SHARE * bank.smallestKvar;
   chosen.set(connected);
+  if (voltageScale === 0) return;
   let d = wantedKvar - bank.fixedKvar * voltageScale;
   for (let c = 0; c < chosen.length; c++) d -= chosen[c]! * bank.classes[c]!.kvar * voltageScale;
   for (let switchings = 0; switchings < decision.mostSwitchings; switchings++) {
