@@ -139,6 +139,27 @@ export function withSetPoint(made: SlowCase, catalogue: SlowCatalogue, candidate
   return null;
 }
 
+/** Reasons that say nothing against a bank; any other counts against it. */
+const NOTHING_AGAINST = new Set([
+  'record.insufficient',
+  'record.short',
+  'target.met',
+  'switchings.lowerBound',
+  'reconnection.short',
+]);
+
+/**
+ * A record too short for a recommendation leaves every bank at `watch` alike, and so chooses none: among those the bank
+ * with nothing else against it is the clear one.
+ */
+function isClear({ result }: Outcome): boolean {
+  if (result.verdict !== 'watch' || result.record.grade !== 'insufficient') return result.verdict === 'clear';
+  return (
+    result.duties.every(({ verdict }) => verdict === 'clear' || verdict === null) &&
+    result.reasons.every(({ code }) => NOTHING_AGAINST.has(code))
+  );
+}
+
 /**
  * Tries everything in order of preference.
  * @param made site, record, zone
@@ -149,7 +170,7 @@ export function slowPlan(made: SlowCase, catalogue: SlowCatalogue): SlowChoice |
   let watched: SlowChoice | null = null;
   for (const candidate of everyCandidate(made, catalogue)) {
     const choice = withSetPoint(made, catalogue, candidate);
-    if (choice?.outcome.result.verdict === 'clear') return choice;
+    if (choice !== null && isClear(choice.outcome)) return choice;
     if (choice?.outcome.result.verdict === 'watch') watched ??= choice;
   }
   return watched;
