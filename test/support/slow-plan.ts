@@ -146,6 +146,8 @@ const NOTHING_AGAINST = new Set([
   'target.met',
   'switchings.lowerBound',
   'reconnection.short',
+  // a bank as new is judged; what it comes to with age is told beside it
+  'ageing.overLimit',
 ]);
 
 /**
