@@ -1,5 +1,7 @@
 import type { Bank } from '../layout/bank.js';
 import { bankLevels } from '../layout/levels.js';
+import type { Flow } from '../network/bus-flow.js';
+import type { CornerCase } from '../network/corners.js';
 import { bankModel, eachFlow } from '../network/flow.js';
 import { hasNearPeak, summarizeNetwork } from '../network/network-check.js';
 import type { NetworkModel } from '../network/network-model.js';
@@ -47,11 +49,12 @@ export function quickJudge(model: NetworkModel, bank: Bank, basis: JudgeBasis): 
   const stages = bank.groups.map((_, g) => new StageDuties(model, bank, g, basis));
   const network = new NetworkDuties(model, limits, known);
   const beside = new NetworkCapacitorDuties(model, basis, known);
-  eachFlow(model, bankModel(model, bank, levels), (flow) => {
+  const take = (flow: Flow): void => {
     network.take(flow);
     beside.take(flow);
     for (const stage of stages) stage.take(flow);
-  });
+  };
+  eachFlow(model, bankModel(model, bank, levels), take, { bareOnce: true, withSource: limits.current !== null });
   const site = { ...basis, nominalV: basis.voltages.nominalV, shortCircuitMva: ends.shortCircuitMva };
   const inrush = inrushStages(bank, site).flatMap((stage) => inrushDuty(bank, stage, basis.rules));
   const duties = [...stages.flatMap((stage) => stage.duties()), ...network.duties(), ...beside.duties(), ...inrush];
@@ -64,6 +67,45 @@ export function quickJudge(model: NetworkModel, bank: Bank, basis: JudgeBasis): 
     verdict: graver(worst(duties), watched ? 'watch' : 'clear'),
     duties,
   };
+}
+
+/** Corners that are looked at first; what ruled one bank out is likely to rule the next one out as well. */
+const MOST_WITNESSES = 4;
+
+/**
+ * Remembers in which corners banks passed a limit, so that most of those that do are known after a few flows instead of
+ * all. Nothing is said of a bank that passes no limit there.
+ */
+export class LimitWitnesses {
+  readonly #model: NetworkModel;
+  #corners: CornerCase[] = [];
+
+  /** @param model the network without the bank */
+  constructor(model: NetworkModel) {
+    this.#model = model;
+  }
+
+  /** @param judged a bank judged on this network; where it passes limits, their corners are remembered */
+  learn({ verdict, duties }: QuickJudgement): void {
+    if (verdict !== 'avoid') return;
+    const { corners } = this.#model.corners;
+    const found = duties.flatMap((duty) =>
+      duty.verdict === 'avoid' ? corners.filter(({ corner }) => corner === duty.corner) : [],
+    );
+    this.#corners = [...new Set([...found, ...this.#corners])].slice(0, MOST_WITNESSES);
+  }
+
+  /**
+   * @param bank the bank
+   * @param basis rules, voltages, supply, loads
+   * @returns true where the bank passes a limit in one of those corners, so that `quickJudge` would say `avoid`
+   * @source method-limits
+   */
+  speakAgainst(bank: Bank, basis: JudgeBasis): boolean {
+    if (this.#corners.length === 0) return false;
+    const here = { ...this.#model, corners: { ...this.#model.corners, corners: this.#corners } };
+    return quickJudge(here, bank, basis).verdict === 'avoid';
+  }
 }
 
 /** The verdict of the full judgement, without its figures. */

@@ -4,7 +4,7 @@ import { type ComplexColumn, LEAST_SIEMENS } from './bus-admittance.js';
 import { bankColumn } from './bus-columns.js';
 import type { Flow } from './bus-flow.js';
 import type { NetworkModel } from './network-model.js';
-import { nodalFlowInto } from './nodal-flow.js';
+import { NodalFlows } from './nodal-flow.js';
 import { primaryVoltagesInto } from './primary-voltage.js';
 import { stageAdmittance, stageBranch } from './stage-admittance.js';
 import { type BankState, bankStates, stageKinds } from './stage-kinds.js';
@@ -45,6 +45,14 @@ export function bankModel(model: NetworkModel, bank: Bank, levels: Level[]): Ban
   };
 }
 
+/** What a caller of `eachFlow` can do without. */
+export interface FlowChoice {
+  /** the first level is the bank out, and is visited once a network: the bank's tolerances play no part in it */
+  bareOnce?: boolean;
+  /** in a network of several buses, false leaves the current of the source and its distortion at 0 */
+  withSource?: boolean;
+}
+
 /**
  * Visits the flow of every level, corner and electrical state, in that order of nesting.
  * Z = 1/(Y₀ + Y_bank); from the loads V = |Z|·I, source current |Z/Z_s|·I; from the background E behind the source
@@ -53,9 +61,15 @@ export function bankModel(model: NetworkModel, bank: Bank, levels: Level[]): Ban
  * @param model the network without the bank
  * @param bank the bank's admittances
  * @param visit called with one flow object that is reused
+ * @param choice what need not be visited or filled
  * @source method-network
  */
-export function eachFlow(model: NetworkModel, bank: BankModel, visit: (flow: Flow) => void): void {
+export function eachFlow(
+  model: NetworkModel,
+  bank: BankModel,
+  visit: (flow: Flow) => void,
+  { bareOnce = false, withSource = true }: FlowChoice = {},
+): void {
   const n = model.excitation.ordersH.length;
   const voltageV = new Float64Array(n);
   const flow: Flow = {
@@ -77,16 +91,22 @@ export function eachFlow(model: NetworkModel, bank: BankModel, visit: (flow: Flo
     voltageDistortionPct: 0,
     currentDistortionPct: 0,
   };
+  const nodal = model.nodal === null ? null : new NodalFlows(model, withSource);
+  const seenBare = new Uint8Array(model.corners.networks.length);
   for (const [k, level] of bank.levels.entries()) {
     for (const corner of model.corners.corners) {
+      if (bareOnce && k === 0) {
+        if (seenBare[corner.network] === 1) continue;
+        seenBare[corner.network] = 1;
+      }
       for (const { vector, connected } of bank.states[k]!) {
         flow.level = k;
         flow.levelKvar = level.levelKvar;
         flow.vector = vector;
         flow.connected = connected;
         flow.corner = corner;
-        if (model.nodal === null) flowInto(model, bank, flow);
-        else nodalFlowInto(model, bank.stages[corner.factors]!, flow);
+        if (nodal === null) flowInto(model, bank, flow);
+        else nodal.into(bank.stages[corner.factors]!, flow);
         if (flow.primary !== null) finishPrimary(model, bank.stages[corner.factors]!, flow);
         visit(flow);
       }
