@@ -1,7 +1,6 @@
 import type { Bank } from '../layout/bank.js';
 import { bankLevels } from '../layout/levels.js';
 import type { Flow } from '../network/bus-flow.js';
-import type { CornerCase } from '../network/corners.js';
 import { bankModel, eachFlow } from '../network/flow.js';
 import { hasNearPeak, summarizeNetwork } from '../network/network-check.js';
 import type { NetworkModel } from '../network/network-model.js';
@@ -74,37 +73,36 @@ const MOST_WITNESSES = 4;
 
 /**
  * Remembers in which corners banks passed a limit, so that most of those that do are known after a few flows instead of
- * all. Nothing is said of a bank that passes no limit there.
+ * all. Nothing is said of a bank that passes no limit there. Networks that differ in numbers alone share their corners'
+ * places.
  */
 export class LimitWitnesses {
-  readonly #model: NetworkModel;
-  #corners: CornerCase[] = [];
+  #places: number[] = [];
 
-  /** @param model the network without the bank */
-  constructor(model: NetworkModel) {
-    this.#model = model;
-  }
-
-  /** @param judged a bank judged on this network; where it passes limits, their corners are remembered */
-  learn({ verdict, duties }: QuickJudgement): void {
+  /**
+   * @param model the network without the bank
+   * @param judged a bank judged on it; where it passes limits, their corners are remembered
+   */
+  learn({ corners: { corners } }: NetworkModel, { verdict, duties }: Pick<QuickJudgement, 'verdict' | 'duties'>): void {
     if (verdict !== 'avoid') return;
-    const { corners } = this.#model.corners;
-    const found = duties.flatMap((duty) =>
-      duty.verdict === 'avoid' ? corners.filter(({ corner }) => corner === duty.corner) : [],
-    );
-    this.#corners = [...new Set([...found, ...this.#corners])].slice(0, MOST_WITNESSES);
+    const found = duties
+      .filter((duty) => duty.verdict === 'avoid')
+      .map((duty) => corners.findIndex(({ corner }) => corner === duty.corner))
+      .filter((place) => place >= 0);
+    this.#places = [...new Set([...found, ...this.#places])].slice(0, MOST_WITNESSES);
   }
 
   /**
+   * @param model the network without the bank
    * @param bank the bank
    * @param basis rules, voltages, supply, loads
    * @returns true where the bank passes a limit in one of those corners, so that `quickJudge` would say `avoid`
    * @source method-limits
    */
-  speakAgainst(bank: Bank, basis: JudgeBasis): boolean {
-    if (this.#corners.length === 0) return false;
-    const here = { ...this.#model, corners: { ...this.#model.corners, corners: this.#corners } };
-    return quickJudge(here, bank, basis).verdict === 'avoid';
+  speakAgainst(model: NetworkModel, bank: Bank, basis: JudgeBasis): boolean {
+    const corners = this.#places.flatMap((place) => model.corners.corners[place] ?? []);
+    if (corners.length === 0) return false;
+    return quickJudge({ ...model, corners: { ...model.corners, corners } }, bank, basis).verdict === 'avoid';
   }
 }
 

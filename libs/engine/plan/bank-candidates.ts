@@ -35,7 +35,7 @@ export class BankCandidates {
   readonly #catalogue: SettledCatalogue;
   readonly #layouts: Layout[];
   readonly #families = new Map<string, Family>();
-  readonly #witnesses: LimitWitnesses;
+  readonly #witnesses = new LimitWitnesses();
 
   /**
    * @param judged settled site and its network
@@ -47,7 +47,6 @@ export class BankCandidates {
     this.#site = site;
     this.#catalogue = catalogue;
     this.#layouts = layouts(catalogue);
-    this.#witnesses = new LimitWitnesses(judged.model);
   }
 
   /**
@@ -107,7 +106,7 @@ export class BankCandidates {
    * @source method-limits
    */
   isRuledOut({ family, bank }: Candidate): boolean {
-    return family.built === undefined && this.#witnesses.speakAgainst(bank, this.basis(bank));
+    return family.built === undefined && this.#witnesses.speakAgainst(this.#judged.model, bank, this.basis(bank));
   }
 
   /**
@@ -155,7 +154,7 @@ export class BankCandidates {
     for (const ratedV of voltages) {
       const bank = this.#bank(layout, ratedV, reactorPct);
       const quick = quickJudge(this.#judged.model, bank, this.basis(bank));
-      this.#witnesses.learn(quick);
+      this.#witnesses.learn(this.#judged.model, quick);
       if (quick.voltages === 'clear') return { ratedV, flows: this.#opened(quick.verdict) };
     }
     return null;
