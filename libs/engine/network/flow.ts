@@ -3,6 +3,7 @@ import type { Level } from '../layout/levels.js';
 import { type ComplexColumn, LEAST_SIEMENS } from './bus-admittance.js';
 import { bankColumn } from './bus-columns.js';
 import type { Flow } from './bus-flow.js';
+import type { CornerCase } from './corners.js';
 import type { NetworkModel } from './network-model.js';
 import { NodalFlows } from './nodal-flow.js';
 import { primaryVoltagesInto } from './primary-voltage.js';
@@ -70,9 +71,49 @@ export function eachFlow(
   visit: (flow: Flow) => void,
   { bareOnce = false, withSource = true }: FlowChoice = {},
 ): void {
+  const flow = emptyFlow(model, bank);
+  const fill = filling(model, bank, withSource);
+  const bareCorners = bareOnce ? firstCorners(model) : model.corners.corners;
+  for (const [k, level] of bank.levels.entries()) {
+    for (const corner of k === 0 ? bareCorners : model.corners.corners) {
+      for (const { vector, connected } of bank.states[k]!) {
+        flow.level = k;
+        flow.levelKvar = level.levelKvar;
+        flow.vector = vector;
+        flow.connected = connected;
+        flow.corner = corner;
+        fill(flow);
+        visit(flow);
+      }
+    }
+  }
+}
+
+// What fills in the numbers of a flow whose level, corner and vector are set.
+function filling(model: NetworkModel, bank: BankModel, withSource: boolean): (flow: Flow) => void {
+  const nodal = model.nodal === null ? null : new NodalFlows(model, withSource);
+  return (flow) => {
+    const stages = bank.stages[flow.corner.factors]!;
+    if (nodal === null) flowInto(model, bank, flow);
+    else nodal.into(stages, flow);
+    if (flow.primary !== null) finishPrimary(model, stages, flow);
+  };
+}
+
+// One corner a network, the first of each.
+function firstCorners({ corners: { corners, networks } }: NetworkModel): CornerCase[] {
+  const seen = new Uint8Array(networks.length);
+  return corners.filter(({ network }) => {
+    const isFirst = seen[network] === 0;
+    seen[network] = 1;
+    return isFirst;
+  });
+}
+
+function emptyFlow(model: NetworkModel, bank: BankModel): Flow {
   const n = model.excitation.ordersH.length;
   const voltageV = new Float64Array(n);
-  const flow: Flow = {
+  return {
     level: 0,
     levelKvar: 0,
     vector: new Int32Array(bank.bank.groups.length),
@@ -91,27 +132,6 @@ export function eachFlow(
     voltageDistortionPct: 0,
     currentDistortionPct: 0,
   };
-  const nodal = model.nodal === null ? null : new NodalFlows(model, withSource);
-  const seenBare = new Uint8Array(model.corners.networks.length);
-  for (const [k, level] of bank.levels.entries()) {
-    for (const corner of model.corners.corners) {
-      if (bareOnce && k === 0) {
-        if (seenBare[corner.network] === 1) continue;
-        seenBare[corner.network] = 1;
-      }
-      for (const { vector, connected } of bank.states[k]!) {
-        flow.level = k;
-        flow.levelKvar = level.levelKvar;
-        flow.vector = vector;
-        flow.connected = connected;
-        flow.corner = corner;
-        if (nodal === null) flowInto(model, bank, flow);
-        else nodal.into(bank.stages[corner.factors]!, flow);
-        if (flow.primary !== null) finishPrimary(model, bank.stages[corner.factors]!, flow);
-        visit(flow);
-      }
-    }
-  }
 }
 
 function finishPrimary(model: NetworkModel, stages: readonly ComplexColumn[], flow: Flow): void {
