@@ -73,7 +73,7 @@ export const ASSUMPTION_MESSAGES: Messages = {
     'Read them too, or compare with the data sheets of the loads.',
   ),
   'network.besideNotSimulated': assumed(
-    '{name} at {bus} is judged at every number of its stages that may be in. How it is switched is not simulated: what it gave while the record was taken stays in the record.',
+    '{name} at {bus} is judged at every number of its stages that may be in. How it is switched is not simulated: what it gave while the record was taken stays in the record. The voltage and current of its capacitors are judged beside this bank; its own switchings, closings, discharge, devices and settings are not.',
     'Judge it as the site’s bank too, with this one among the banks of its network.',
   ),
   'network.cables.steady': assumed(

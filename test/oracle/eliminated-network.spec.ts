@@ -1,14 +1,16 @@
 // Reference: the complex inverse of mathjs 15.2.0, a general matrix library, of the admittance matrix put together here
-// branch by branch.
+// branch by branch. Near a resonance the last places of that matrix's own entries move its inverse by more than 1e-12; what
+// they are worth is then the limit, for the library is off by as much.
 import { complex, inv, type Matrix, matrix } from 'mathjs';
 import { describe, expect, it } from 'vitest';
 import { EliminatedNetwork, type NodalCase, networkScene } from '#libs/engine/index.js';
 import { chance } from '../support/chance.js';
 import { Complex } from '../support/complex.js';
 import { madeBuses } from '../support/made-buses.js';
+import { roundingRoom } from '../support/rounding-room.js';
 import { runs, SEED } from '../support/soak.js';
 
-function libraryImpedance(network: NodalCase, orderH: number): Complex[][] {
+function libraryImpedance(network: NodalCase, orderH: number): { y: Complex[][]; z: Complex[][] } {
   const y = Array.from({ length: network.nodes }, (_, r) =>
     Array.from({ length: network.nodes }, (_, c) => new Complex(r === c ? network.conductance[r]! : 0)),
   );
@@ -23,27 +25,40 @@ function libraryImpedance(network: NodalCase, orderH: number): Complex[][] {
     y[to]![from] = y[to]![from]!.minus(admittance);
   }
   const found = inv(matrix(y.map((row) => row.map(({ re, im }) => complex(re, im))))) as Matrix;
-  return (found.toArray() as { re: number; im: number }[][]).map((row) => row.map(({ re, im }) => new Complex(re, im)));
+  const z = (found.toArray() as { re: number; im: number }[][]).map((row) =>
+    row.map(({ re, im }) => new Complex(re, im)),
+  );
+  return { y, z };
 }
 
-// Furthest off, against the two own impedances an entry lies between.
-function furthest(network: NodalCase, bankNode: number, ordersH: Float64Array): number {
+const sizes = (m: Complex[][]): Float64Array => Float64Array.from(m.flat(), ({ size }) => size);
+
+/** Our own branches and their sums are rounded too, and an admittance at the bank is held against the library's impedance. */
+const ROOMS = 4;
+
+// Furthest off, against the two own impedances an entry lies between; as a share of `limit`, or of what rounding the matrix
+// is worth at that order where that is more.
+function furthest(network: NodalCase, bankNode: number, ordersH: Float64Array, limit: number): number {
   const eliminated = new EliminatedNetwork(network, bankNode);
   const { bank, nodes } = eliminated.columns(ordersH);
   const alone = eliminated.bankAdmittance(ordersH);
   const at = (column: typeof bank, i: number): Complex => new Complex(column.re[i]!, column.im[i]!);
   let worst = 0;
   for (const [i, orderH] of ordersH.entries()) {
-    const z = libraryImpedance(network, orderH);
+    const { y, z } = libraryImpedance(network, orderH);
+    const allowed = Math.max(limit, ROOMS * roundingRoom(sizes(y), sizes(z), network.nodes));
+    const take = (off: number): void => {
+      worst = Math.max(worst, off / allowed);
+    };
     const own = z[bankNode]![bankNode]!;
     for (const column of [bank, alone]) {
-      worst = Math.max(worst, at(column, i).times(own).minus(new Complex(1)).size);
+      take(at(column, i).times(own).minus(new Complex(1)).size);
     }
     for (const [k, { self, toBank }] of nodes.entries()) {
       const expected = z[k]!;
-      worst = Math.max(worst, at(self, i).minus(expected[k]!).size / expected[k]!.size);
+      take(at(self, i).minus(expected[k]!).size / expected[k]!.size);
       const between = Math.sqrt(expected[k]!.size * own.size);
-      worst = Math.max(worst, at(toBank, i).minus(expected[bankNode]!).size / between);
+      take(at(toBank, i).minus(expected[bankNode]!).size / between);
     }
   }
   return worst;
@@ -79,8 +94,8 @@ describe(`a network eliminated down to the bank's node, against a matrix library
       const { model } = networkScene(madeBuses(random));
       const ordersH = Float64Array.from([1, 5, 7, 50, random.between(1, 50), random.between(1, 50)]);
       for (const nodal of model.nodal!.cases.slice(0, 3)) {
-        const off = furthest(nodal, nodal.busNode[model.bankBus]!, ordersH);
-        expect(off, JSON.stringify({ k, nodes: nodal.nodes })).toBeLessThan(1e-12);
+        const share = furthest(nodal, nodal.busNode[model.bankBus]!, ordersH, 1e-12);
+        expect(share, JSON.stringify({ k, nodes: nodal.nodes })).toBeLessThan(1);
       }
     }
   });
@@ -94,8 +109,8 @@ describe(`a network eliminated down to the bank's node, against a matrix library
       for (let node = 0; node < nodal.nodes; node++) {
         const ordersH = Float64Array.from(ownResonance(nodal, node));
         resonances += ordersH.length;
-        const off = furthest(nodal, nodal.busNode[model.bankBus]!, ordersH);
-        expect(off, JSON.stringify({ k, node, ordersH: [...ordersH] })).toBeLessThan(1e-11);
+        const share = furthest(nodal, nodal.busNode[model.bankBus]!, ordersH, 1e-11);
+        expect(share, JSON.stringify({ k, node, ordersH: [...ordersH] })).toBeLessThan(1);
       }
     }
     expect(resonances).toBeGreaterThan(20);
@@ -120,6 +135,6 @@ describe(`a network eliminated down to the bank's node, against a matrix library
       conductance: Float64Array.of(0, 0, 0.1),
       resistanceExponent: 0.5,
     };
-    expect(furthest(network, 2, Float64Array.of(1))).toBeLessThan(1e-14);
+    expect(furthest(network, 2, Float64Array.of(1), 1e-14)).toBeLessThan(1);
   });
 });

@@ -78,6 +78,19 @@ describe(`the netlist a reviewer gets, in a circuit simulator (seed ${SEED})`, (
     }
   });
 
+  // A reviewer who reads nothing but the file has to know what each part of it is.
+  it('says in its head what every part stands for', () => {
+    for (const { site } of sites().slice(0, 40)) {
+      const lines = siteNetlist(site, { ordersH: Float64Array.of(5) }).network.split('\n');
+      const told = lines.flatMap((line) => line.match(/^\* (\S+?)(?: to \S+)?: /)?.[1] ?? []);
+      const parts = lines.flatMap((line) => line.match(/^[rlc]([a-z]+\d*)(?:x\d+)?_/)?.[1] ?? []);
+      expect(parts.length).toBeGreaterThan(0);
+      expect(new Set(told.map((name) => name.replace(/x\d+$/, '')))).toEqual(
+        new Set([...told.map((name) => name.replace(/x\d+$/, '')), ...parts]),
+      );
+    }
+  });
+
   it('sweeps evenly spaced orders in one go, each read at its own frequency', async () => {
     const { site } = sites()[0]!;
     const ordersH = Float64Array.of(5, 7, 9, 11, 13);

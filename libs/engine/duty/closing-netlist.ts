@@ -18,6 +18,11 @@ export function closingNetlist(circuit: ClosingCircuit, title: string): string {
   const step = stepS(circuit, peak.afterS);
   const lines = [
     netlistComment(title),
+    '* Per phase, at nominal voltage: r in ohm, l in henry, c in farad. Resistances are those at the fundamental; damping',
+    '* loads and harmonics are left out, the supply is at its strongest.',
+    '* Time 0 is the closing, at the worst instant: what is in begins in its steady state (ic: amperes of a coil, volts of a',
+    '* capacitor; hence uic), the closing stage uncharged. Read the greatest magnitude of i(vclosing).',
+    ...partComments(circuit),
     `* greatest current expected: ${number(peak.peakA)} A, ${number(peak.afterS)} s after closing`,
     `vsource feed 0 sin(0 ${number(circuit.crestV)} ${number(circuit.frequencyHz)} 0 0 ${number((peak.phaseRad * 180) / Math.PI + 90)})`,
     ...standingLines(circuit, peak.phaseRad),
@@ -28,6 +33,23 @@ export function closingNetlist(circuit: ClosingCircuit, title: string): string {
     '',
   ];
   return lines.join('\n');
+}
+
+// What each part stands for.
+function partComments({ network, connected }: ClosingCircuit): string[] {
+  return [
+    ...(network === undefined
+      ? ['* source: supply and transformers up to the bus']
+      : [
+          '* source, net1, net2 …: the network round the bus, with its transformers, cables and other capacitors; n1, n2 … its nodes',
+        ]),
+    ...(connected.length === 0
+      ? []
+      : [
+          `* in1${connected.length === 1 ? '' : ` to in${connected.length}`}: stages that are in, those of one kind as one branch; other capacitors at the bus`,
+        ]),
+    '* closing: the stage that is closed, with the inductance between stages where it meets other capacitors',
+  ];
 }
 
 // Everything but the closing stage, each branch at its steady state.

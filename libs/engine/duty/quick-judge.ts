@@ -1,5 +1,6 @@
 import type { Bank } from '../layout/bank.js';
 import { bankLevels } from '../layout/levels.js';
+import type { Flow } from '../network/bus-flow.js';
 import { bankModel, eachFlow } from '../network/flow.js';
 import { hasNearPeak, summarizeNetwork } from '../network/network-check.js';
 import type { NetworkModel } from '../network/network-model.js';
@@ -47,11 +48,12 @@ export function quickJudge(model: NetworkModel, bank: Bank, basis: JudgeBasis): 
   const stages = bank.groups.map((_, g) => new StageDuties(model, bank, g, basis));
   const network = new NetworkDuties(model, limits, known);
   const beside = new NetworkCapacitorDuties(model, basis, known);
-  eachFlow(model, bankModel(model, bank, levels), (flow) => {
+  const take = (flow: Flow): void => {
     network.take(flow);
     beside.take(flow);
     for (const stage of stages) stage.take(flow);
-  });
+  };
+  eachFlow(model, bankModel(model, bank, levels), take, { bareOnce: true, withSource: limits.current !== null });
   const site = { ...basis, nominalV: basis.voltages.nominalV, shortCircuitMva: ends.shortCircuitMva };
   const inrush = inrushStages(bank, site).flatMap((stage) => inrushDuty(bank, stage, basis.rules));
   const duties = [...stages.flatMap((stage) => stage.duties()), ...network.duties(), ...beside.duties(), ...inrush];
@@ -64,6 +66,44 @@ export function quickJudge(model: NetworkModel, bank: Bank, basis: JudgeBasis): 
     verdict: graver(worst(duties), watched ? 'watch' : 'clear'),
     duties,
   };
+}
+
+/** Corners that are looked at first; what ruled one bank out is likely to rule the next one out as well. */
+const MOST_WITNESSES = 4;
+
+/**
+ * Remembers in which corners banks passed a limit, so that most of those that do are known after a few flows instead of
+ * all. Nothing is said of a bank that passes no limit there. Networks that differ in numbers alone share their corners'
+ * places.
+ */
+export class LimitWitnesses {
+  #places: number[] = [];
+
+  /**
+   * @param model the network without the bank
+   * @param judged a bank judged on it; where it passes limits, their corners are remembered
+   */
+  learn({ corners: { corners } }: NetworkModel, { verdict, duties }: Pick<QuickJudgement, 'verdict' | 'duties'>): void {
+    if (verdict !== 'avoid') return;
+    const found = duties
+      .filter((duty) => duty.verdict === 'avoid')
+      .map((duty) => corners.findIndex(({ corner }) => corner === duty.corner))
+      .filter((place) => place >= 0);
+    this.#places = [...new Set([...found, ...this.#places])].slice(0, MOST_WITNESSES);
+  }
+
+  /**
+   * @param model the network without the bank
+   * @param bank the bank
+   * @param basis rules, voltages, supply, loads
+   * @returns true where the bank passes a limit in one of those corners, so that `quickJudge` would say `avoid`
+   * @source method-limits
+   */
+  speakAgainst(model: NetworkModel, bank: Bank, basis: JudgeBasis): boolean {
+    const corners = this.#places.flatMap((place) => model.corners.corners[place] ?? []);
+    if (corners.length === 0) return false;
+    return quickJudge({ ...model, corners: { ...model.corners, corners } }, bank, basis).verdict === 'avoid';
+  }
 }
 
 /** The verdict of the full judgement, without its figures. */

@@ -3,8 +3,9 @@ import type { Level } from '../layout/levels.js';
 import { type ComplexColumn, LEAST_SIEMENS } from './bus-admittance.js';
 import { bankColumn } from './bus-columns.js';
 import type { Flow } from './bus-flow.js';
+import type { CornerCase } from './corners.js';
 import type { NetworkModel } from './network-model.js';
-import { nodalFlowInto } from './nodal-flow.js';
+import { NodalFlows } from './nodal-flow.js';
 import { primaryVoltagesInto } from './primary-voltage.js';
 import { stageAdmittance, stageBranch } from './stage-admittance.js';
 import { type BankState, bankStates, stageKinds } from './stage-kinds.js';
@@ -45,6 +46,14 @@ export function bankModel(model: NetworkModel, bank: Bank, levels: Level[]): Ban
   };
 }
 
+/** What a caller of `eachFlow` can do without. */
+export interface FlowChoice {
+  /** the first level is the bank out, and is visited once a network: the bank's tolerances play no part in it */
+  bareOnce?: boolean;
+  /** in a network of several buses, false leaves the current of the source and its distortion at 0 */
+  withSource?: boolean;
+}
+
 /**
  * Visits the flow of every level, corner and electrical state, in that order of nesting.
  * Z = 1/(Y₀ + Y_bank); from the loads V = |Z|·I, source current |Z/Z_s|·I; from the background E behind the source
@@ -53,12 +62,58 @@ export function bankModel(model: NetworkModel, bank: Bank, levels: Level[]): Ban
  * @param model the network without the bank
  * @param bank the bank's admittances
  * @param visit called with one flow object that is reused
+ * @param choice what need not be visited or filled
  * @source method-network
  */
-export function eachFlow(model: NetworkModel, bank: BankModel, visit: (flow: Flow) => void): void {
+export function eachFlow(
+  model: NetworkModel,
+  bank: BankModel,
+  visit: (flow: Flow) => void,
+  { bareOnce = false, withSource = true }: FlowChoice = {},
+): void {
+  const flow = emptyFlow(model, bank);
+  const fill = filling(model, bank, withSource);
+  const bareCorners = bareOnce ? firstCorners(model) : model.corners.corners;
+  for (const [k, level] of bank.levels.entries()) {
+    for (const corner of k === 0 ? bareCorners : model.corners.corners) {
+      for (const { vector, connected } of bank.states[k]!) {
+        flow.level = k;
+        flow.levelKvar = level.levelKvar;
+        flow.vector = vector;
+        flow.connected = connected;
+        flow.corner = corner;
+        fill(flow);
+        visit(flow);
+      }
+    }
+  }
+}
+
+// What fills in the numbers of a flow whose level, corner and vector are set.
+function filling(model: NetworkModel, bank: BankModel, withSource: boolean): (flow: Flow) => void {
+  const nodal = model.nodal === null ? null : new NodalFlows(model, withSource);
+  return (flow) => {
+    const stages = bank.stages[flow.corner.factors]!;
+    if (nodal === null) flowInto(model, bank, flow);
+    else nodal.into(stages, flow);
+    if (flow.primary !== null) finishPrimary(model, stages, flow);
+  };
+}
+
+// One corner a network, the first of each.
+function firstCorners({ corners: { corners, networks } }: NetworkModel): CornerCase[] {
+  const seen = new Uint8Array(networks.length);
+  return corners.filter(({ network }) => {
+    const isFirst = seen[network] === 0;
+    seen[network] = 1;
+    return isFirst;
+  });
+}
+
+function emptyFlow(model: NetworkModel, bank: BankModel): Flow {
   const n = model.excitation.ordersH.length;
   const voltageV = new Float64Array(n);
-  const flow: Flow = {
+  return {
     level: 0,
     levelKvar: 0,
     vector: new Int32Array(bank.bank.groups.length),
@@ -77,21 +132,6 @@ export function eachFlow(model: NetworkModel, bank: BankModel, visit: (flow: Flo
     voltageDistortionPct: 0,
     currentDistortionPct: 0,
   };
-  for (const [k, level] of bank.levels.entries()) {
-    for (const corner of model.corners.corners) {
-      for (const { vector, connected } of bank.states[k]!) {
-        flow.level = k;
-        flow.levelKvar = level.levelKvar;
-        flow.vector = vector;
-        flow.connected = connected;
-        flow.corner = corner;
-        if (model.nodal === null) flowInto(model, bank, flow);
-        else nodalFlowInto(model, bank.stages[corner.factors]!, flow);
-        if (flow.primary !== null) finishPrimary(model, bank.stages[corner.factors]!, flow);
-        visit(flow);
-      }
-    }
-  }
 }
 
 function finishPrimary(model: NetworkModel, stages: readonly ComplexColumn[], flow: Flow): void {

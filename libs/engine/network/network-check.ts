@@ -256,11 +256,21 @@ function bareImpedances(
   const { topology } = model.nodal!;
   const none = topology.motorKw.map(() => 0);
   const bare = { ...topology, motorKw: none, resistiveKw: none };
-  return states.map((state) => {
+  return bareStandings(states).map((state) => {
     const withoutCapacitors = { ...state, capacitorsIn: state.capacitorsIn.map(() => 0) };
     const nodal = nodalCase(bare, withoutCapacitors, path, { ...model.damping, dampingKw: 0, listedShare: 0 });
     const { z, nodes } = nodalTable(nodal, Float64Array.of(1));
     const at = 2 * nodal.busNode[model.bankBus]! * (nodes + 1);
     return [z[at]!, z[at + 1]!];
   });
+}
+
+// Standings that differ in their capacitors alone are one where those are left out.
+function bareStandings(states: readonly NetworkState[]): NetworkState[] {
+  const distinct = new Map<string, NetworkState>();
+  for (const state of states) {
+    const key = JSON.stringify([state.closedCouplers, state.runningGenerators, state.transformerOut]);
+    if (!distinct.has(key)) distinct.set(key, state);
+  }
+  return [...distinct.values()];
 }

@@ -7,6 +7,7 @@ import type { Loads } from './loads.js';
 import { networkStates, withTolerances } from './network-states.js';
 import { type NodalCase, nodalCase } from './nodal-case.js';
 import { type NodalTable, nodalTable } from './nodal-impedance.js';
+import { type NodeCurrents, nodeCurrents } from './node-currents.js';
 import { type BusInjection, busInjection, combine, type Excitation, excitation } from './summation.js';
 import type { Topology } from './topology.js';
 
@@ -29,8 +30,8 @@ export interface NodalModel {
   eliminated: EliminatedNetwork[];
   /** per network, at the orders present */
   tables: NodalTable[];
-  /** per bus: what the loads at it inject at the orders present */
-  injected: BusInjection[];
+  /** per network: what the loads inject at its nodes at the orders present */
+  currents: NodeCurrents[];
 }
 
 /** Everything about the network that does not depend on the bank, tabled once. */
@@ -158,12 +159,13 @@ function nodalModel(parts: {
     const atBankKw = listedShare * loads.dampingKw.max;
     return nodalCase(topology, state!, path, { ...damping, dampingKw: atBankKw, listedShare });
   });
+  const injected = topology.buses.map((name, bus) => injectedAt(loads, present, { name, first: bus === 0 }));
   return {
     topology,
     cases,
     eliminated: cases.map((nodal) => new EliminatedNetwork(nodal, nodal.busNode[topology.bankBus]!)),
     tables: cases.map((nodal) => nodalTable(nodal, present.ordersH)),
-    injected: topology.buses.map((name, bus) => injectedAt(loads, present, { name, first: bus === 0 })),
+    currents: cases.map((nodal) => nodeCurrents(nodal, injected, present.exponent)),
   };
 }
 

@@ -37,7 +37,11 @@ export function networkNetlist(model: NetworkModel, scene: NetlistScene): string
     ...model.buses.map((name, k) => netlistComment(`${name}: ${nodeName(model, nodal, nodal.busNode[k]!)}`)),
     '* Above, each bus and its node; a node ends in its order. One copy of the network an order; read each at the',
     '* frequency in its comment: a sweep to another makes no sense, since its resistances belong to its own order.',
-    '* 1 A enters at the bus of the bank, so volts are ohms.',
+    '* Per phase, star-equivalent, referred to the voltage of the buses: r in ohm, l in henry, c in farad. Resistances are',
+    `* those at the fundamental times order^${nodal.resistanceExponent}; those of cables and resistive loads stay as they are.`,
+    "* 1 A enters at the bus of the bank, so volts are ohms: the magnitude at that bus's node is the impedance there, at any",
+    '* other node the transfer impedance between the two. A coupler that is closed makes its buses one node.',
+    ...partComments(model, nodal, scene),
     ...copies.flat(),
     ...orders.slice(0, 1).map(() => `.ac lin ${sweepPoints(orders)} ${number(lowest)} ${number(highest)}`),
     '.end',
@@ -52,6 +56,30 @@ export function networkNetlist(model: NetworkModel, scene: NetlistScene): string
  */
 export function netlistComment(text: string): string {
   return `* ${text.replaceAll(/[\p{C}\p{Zl}\p{Zp}]+/gu, ' ').trim()}`;
+}
+
+// What each part of a copy stands for, and between which nodes.
+function partComments(model: NetworkModel, nodal: NodalCase, { bank, vector, corner }: NetlistScene): string[] {
+  const node = (k: number): string => (k < 0 ? 'earth' : nodeName(model, nodal, k));
+  const between = (from: number, to: number): string => `${node(from)} to ${node(to)}`;
+  const { faultLevelMva, capacitanceFactor, inductanceFactor } = corner.corner;
+  const tolerance = `capacitance x ${capacitanceFactor}, inductance x ${inductanceFactor}`;
+  return [
+    `* source: supply of ${faultLevelMva} MVA as an impedance, ${between(nodal.sourceNode, -1)}`,
+    ...nodal.branches.map(({ what, from, to }, i) =>
+      netlistComment(`part${i + 1}: ${what ?? ''}, ${between(from, to)}`),
+    ),
+    ...Array.from(nodal.conductance).flatMap((siemens, k) =>
+      siemens > 0 ? [`* load${k + 1}: resistive load, ${between(k, -1)}`] : [],
+    ),
+    ...bank.groups.flatMap(({ ratedKvar, ratedV, reactorPct }, g) => {
+      if (vector[g] === 0) return [];
+      const reactor = reactorPct > 0 ? `reactor of ${reactorPct} %` : 'no reactor';
+      const rated = `${ratedKvar} kvar at ${ratedV} V, ${reactor}`;
+      const last = vector[g] === 1 ? '' : ` to stage${g + 1}x${vector[g]}`;
+      return [`* stage${g + 1}x1${last}: stages of group ${g + 1}, each ${rated}, ${tolerance}`];
+    }),
+  ];
 }
 
 // Evenly spaced orders can be swept in one go; others are read one frequency at a time.

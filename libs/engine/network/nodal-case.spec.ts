@@ -73,12 +73,14 @@ describe('one standing of a network', () => {
 
   it('leaves out the transformer that is out, and keeps the other at its own bus', () => {
     const transformers = branchesOf({ transformerOut: 0 }).branches.filter(({ from }) => from === 3);
-    expect(transformers).toEqual([{ from: 3, to: 1, steadyOhm: 0, rOhm: 0.003, xOhm: 0.02, capacitiveOhm: 0 }]);
+    expect(transformers).toEqual([
+      { what: 'transformer 2', from: 3, to: 1, steadyOhm: 0, rOhm: 0.003, xOhm: 0.02, capacitiveOhm: 0 },
+    ]);
   });
 
   it('hangs running generators and the capacitors that are in from their bus: two of 3.2 Ω are 1.6 Ω', () => {
     const shunts = branchesOf({ runningGenerators: [true], capacitorsIn: [2] }).branches.filter(({ to }) => to === -1);
-    expect(shunts[0]).toEqual({ from: 2, to: -1, steadyOhm: 0, rOhm: 0.006, xOhm: 0.04, capacitiveOhm: 0 });
+    expect(shunts[0]).toMatchObject({ from: 2, to: -1, steadyOhm: 0, rOhm: 0.006, xOhm: 0.04, capacitiveOhm: 0 });
     expect(shunts[1]!.capacitiveOhm).toBeCloseTo(1.6, 12);
     expect(shunts[1]!.xOhm).toBeCloseTo(0.07 * 1.6, 12);
     expect(shunts[1]!.rOhm).toBeCloseTo((0.07 * 1.6) / 35, 12);

@@ -5,6 +5,8 @@ import type { NetworkState, Topology } from './topology.js';
 
 /** A branch over order: Z(h) = R₀ + R·h^k + jhX − jX_C/h; `to` −1 is earth. */
 export interface NodalBranch {
+  /** what it stands for, for a reader */
+  what?: string;
   from: number;
   to: number;
   /** R₀, a cable's: it does not grow with order */
@@ -72,7 +74,8 @@ export function nodalCase(topology: Topology, state: NetworkState, path: SupplyP
     conductance[node]! += load.siemens;
     if (load.motorOhm > 0) {
       const rOhm = MOTOR_RESISTANCE_SHARE * load.motorOhm;
-      branches.push({ from: node, to: -1, steadyOhm: 0, rOhm, xOhm: load.motorOhm, capacitiveOhm: 0 });
+      const what = `motors at ${topology.buses[load.bus]!}`;
+      branches.push({ what, from: node, to: -1, steadyOhm: 0, rOhm, xOhm: load.motorOhm, capacitiveOhm: 0 });
     }
   }
   return {
@@ -94,10 +97,20 @@ function seriesBranches(
   const transformers = topology.transformerBus.flatMap((bus, i) =>
     i === state.transformerOut
       ? []
-      : [{ from: at.sourceNode, to: at.busNode[bus]!, steadyOhm: 0, ...at.path.transformers[i]!, capacitiveOhm: 0 }],
+      : [
+          {
+            what: `transformer ${i + 1}`,
+            from: at.sourceNode,
+            to: at.busNode[bus]!,
+            steadyOhm: 0,
+            ...at.path.transformers[i]!,
+            capacitiveOhm: 0,
+          },
+        ],
   );
   const cables = topology.cables
-    .map(({ from, to, rOhm, xOhm }) => ({
+    .map(({ name, from, to, rOhm, xOhm }) => ({
+      what: `cable ${name}`,
       from: at.busNode[from]!,
       to: at.busNode[to]!,
       steadyOhm: rOhm,
@@ -116,13 +129,22 @@ function shuntBranches(
 ): NodalBranch[] {
   const generators = topology.generators
     .filter((_, i) => state.runningGenerators[i])
-    .map(({ bus, rOhm, xOhm }) => ({ from: busNode[bus]!, to: -1, steadyOhm: 0, rOhm, xOhm, capacitiveOhm: 0 }));
-  const capacitors = topology.capacitors.flatMap(({ bus, group }, i) => {
+    .map(({ name, bus, rOhm, xOhm }) => ({
+      what: `generator ${name}, subtransient`,
+      from: busNode[bus]!,
+      to: -1,
+      steadyOhm: 0,
+      rOhm,
+      xOhm,
+      capacitiveOhm: 0,
+    }));
+  const capacitors = topology.capacitors.flatMap(({ name, bus, group }, i) => {
     const count = state.capacitorsIn[i]!;
     if (count === 0) return [];
     const ohm = stageBranch(group, state.tolerance ?? NAMEPLATE, 0);
     return [
       {
+        what: `${count} in parallel of the network's capacitors, ${name}`,
         from: bus === 'primary' ? sourceNode : busNode[bus]!,
         to: -1,
         steadyOhm: 0,

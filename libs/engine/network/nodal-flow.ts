@@ -1,191 +1,227 @@
 import type { ComplexColumn } from './bus-admittance.js';
 import type { Flow } from './bus-flow.js';
 import type { NetworkModel, NodalModel } from './network-model.js';
+import type { NodeCurrents } from './node-currents.js';
 import { combine } from './summation.js';
 
 /**
- * The flow in a network of several buses. Connecting the bank at bus b is a rank-1 change of the impedance matrix,
+ * The flows in a network of several buses. Connecting the bank at bus b is a rank-1 change of the impedance matrix,
  * Z_pq = z_pq − z_pb·z_bq·Y/(1 + Y·z_bb). From the loads of one bus j: V_i = |Z_ij|·I_j and source current |Z_sj/Z_s|·I_j,
  * s the node behind the source; from the background V_i = |Z_is|·E/|Z_s|, source current |E·(1 − Z_ss/Z_s)/Z_s|.
  * Contributions combine with the order's exponent, the currents with angles as one: |Σ Z_ij·I_j|.
- * @param model the network without the bank, with several buses
- * @param stages y of one stage of each group at the orders present
- * @param flow level, corner and vector are read, everything else is filled
- * @source method-network
+ *
+ * A bank is looked at in thousands of flows, so one object serves all of them and nothing is made on the way.
  */
-export function nodalFlowInto(model: NetworkModel, stages: readonly ComplexColumn[], flow: Flow): void {
-  const nodal = model.nodal!;
-  const nodalCase = nodal.cases[flow.corner.network]!;
-  const bankNode = nodalCase.busNode[model.bankBus]!;
-  const phaseV = model.nominalV / Math.sqrt(3);
-  const squares = new Float64Array(flow.buses.length);
-  let currentSquare = 0;
-  for (let i = 0; i < flow.ordersH.length; i++) {
-    const at = new OrderAt(model, nodal, { network: flow.corner.network, order: i, bankNode });
-    at.connect(stages, flow.vector);
-    for (let bus = 0; bus < flow.buses.length; bus++) {
-      const v = at.voltageV(nodalCase.busNode[bus]!);
-      flow.buses[bus]!.voltageV[i] = v;
-      squares[bus]! += v * v;
-    }
-    if (flow.primary !== null) flow.primary.voltageV[i] = at.voltageV(nodalCase.sourceNode);
-    const bankV = flow.buses[model.bankBus]!.voltageV[i]!;
-    flow.voltageV[i] = bankV;
-    flow.sourceA[i] = at.sourceA();
-    flow.bankA[i] = bankV * at.bankSiemens();
-    for (let g = 0; g < stages.length; g++) {
-      flow.stageA[g]![i] = bankV * Math.sqrt(stages[g]!.re[i]! ** 2 + stages[g]!.im[i]! ** 2);
-    }
-    currentSquare += flow.sourceA[i]! ** 2;
-  }
-  for (let bus = 0; bus < squares.length; bus++) {
-    flow.buses[bus]!.voltageDistortionPct = (100 * Math.sqrt(squares[bus]!)) / phaseV;
-  }
-  flow.voltageDistortionPct = flow.buses[model.bankBus]!.voltageDistortionPct;
-  flow.currentDistortionPct = model.loadA > 0 ? (100 * Math.sqrt(currentSquare)) / model.loadA : 0;
-}
-
-/** One order of one network with the bank connected. */
-class OrderAt {
-  readonly #z: Float64Array;
-  readonly #offset: number;
-  readonly #n: number;
-  readonly #bankNode: number;
-  readonly #sourceNode: number;
-  readonly #sourceRe: number;
-  readonly #sourceIm: number;
-  readonly #alpha: number;
-  readonly #backgroundV: number;
-  /** loads without angles, combined per node [A] */
-  readonly #injectedA: Float64Array;
-  /** phasor sum of the loads with angles, per node [A] */
-  readonly #phasorRe: Float64Array;
-  readonly #phasorIm: Float64Array;
-  #bankRe = 0;
-  #bankIm = 0;
+export class NodalFlows {
+  readonly #model: NetworkModel;
+  readonly #nodal: NodalModel;
+  readonly #withSource: boolean;
+  readonly #squares: Float64Array;
+  /** Z from the node in hand to each node with a current [Ω] */
+  readonly #row: Float64Array;
+  // What follows is of the order in hand.
+  #z: Float64Array = new Float64Array();
+  #offset = 0;
+  #n = 0;
+  #bankNode = 0;
+  #sourceNode = 0;
+  #order = 0;
+  #alpha = 1;
+  #backgroundV = 0;
+  #sourceOhm = 0;
+  #currents: NodeCurrents;
   /** 1 + Y·z_bb */
   #loopRe = 1;
   #loopIm = 0;
+  #loopSquare = 1;
   /** Y/(1 + Y·z_bb) [S] */
   #factorRe = 0;
   #factorIm = 0;
+  /** Z from the node in hand to the source's node [Ω] */
+  #toSourceRe = 0;
+  #toSourceIm = 0;
 
-  constructor(model: NetworkModel, nodal: NodalModel, place: { network: number; order: number; bankNode: number }) {
-    const table = nodal.tables[place.network]!;
-    const nodalCase = nodal.cases[place.network]!;
+  /**
+   * @param model the network without the bank, with several buses
+   * @param withSource false leaves the current of the source out
+   */
+  constructor(model: NetworkModel, withSource: boolean) {
+    this.#model = model;
+    this.#nodal = model.nodal!;
+    this.#withSource = withSource;
+    this.#squares = new Float64Array(model.buses.length);
+    this.#currents = this.#nodal.currents[0]!;
+    this.#row = new Float64Array(2 * (model.buses.length + 1));
+  }
+
+  /**
+   * @param stages y of one stage of each group at the orders present
+   * @param flow level, corner and vector are read, everything else is filled
+   * @source method-network
+   */
+  into(stages: readonly ComplexColumn[], flow: Flow): void {
+    const { network } = flow.corner;
+    const { busNode, sourceNode } = this.#nodal.cases[network]!;
+    const table = this.#nodal.tables[network]!;
     this.#z = table.z;
     this.#n = table.nodes;
-    this.#offset = 2 * place.order * table.nodes * table.nodes;
-    this.#bankNode = place.bankNode;
-    this.#sourceNode = nodalCase.sourceNode;
-    this.#sourceRe = table.sourceRe[place.order]!;
-    this.#sourceIm = table.sourceIm[place.order]!;
-    this.#alpha = model.excitation.exponent[place.order]!;
-    this.#backgroundV = model.excitation.backgroundV[place.order]!;
-    this.#injectedA = new Float64Array(table.nodes);
-    this.#phasorRe = new Float64Array(table.nodes);
-    this.#phasorIm = new Float64Array(table.nodes);
-    for (const [bus, { magnitudeA, re, im }] of nodal.injected.entries()) {
-      const node = nodalCase.busNode[bus]!;
-      this.#injectedA[node] = combine(this.#injectedA[node]!, magnitudeA[place.order]!, this.#alpha);
-      this.#phasorRe[node]! += re[place.order]!;
-      this.#phasorIm[node]! += im[place.order]!;
+    this.#bankNode = busNode[this.#model.bankBus]!;
+    this.#sourceNode = sourceNode;
+    this.#currents = this.#nodal.currents[network]!;
+    const squares = this.#squares.fill(0);
+    let currentSquare = 0;
+    for (let i = 0; i < flow.ordersH.length; i++) {
+      this.#begin(i, network);
+      const bankSiemens = this.#connect(stages, flow.vector);
+      this.#voltagesInto(flow, busNode);
+      for (let bus = 0; bus < squares.length; bus++) {
+        const v = flow.buses[bus]!.voltageV[i]!;
+        squares[bus]! += v * v;
+      }
+      const bankV = flow.buses[this.#model.bankBus]!.voltageV[i]!;
+      flow.voltageV[i] = bankV;
+      flow.bankA[i] = bankV * bankSiemens;
+      for (let g = 0; g < stages.length; g++) {
+        flow.stageA[g]![i] = bankV * magnitude(stages[g]!.re[i]!, stages[g]!.im[i]!);
+      }
+      if (flow.primary === null && !this.#withSource) continue;
+      this.#rowInto(sourceNode);
+      if (flow.primary !== null) flow.primary.voltageV[i] = this.#voltageV();
+      if (!this.#withSource) continue;
+      const sourceA = this.#sourceA(table.sourceRe[i]!, table.sourceIm[i]!);
+      flow.sourceA[i] = sourceA;
+      currentSquare += sourceA * sourceA;
     }
-    this.#order = place.order;
+    const phaseV = this.#model.nominalV / Math.sqrt(3);
+    for (let bus = 0; bus < squares.length; bus++) {
+      flow.buses[bus]!.voltageDistortionPct = (100 * Math.sqrt(squares[bus]!)) / phaseV;
+    }
+    flow.voltageDistortionPct = flow.buses[this.#model.bankBus]!.voltageDistortionPct;
+    flow.currentDistortionPct = this.#model.loadA > 0 ? (100 * Math.sqrt(currentSquare)) / this.#model.loadA : 0;
   }
 
-  readonly #order: number;
+  #begin(order: number, network: number): void {
+    const { exponent, backgroundV } = this.#model.excitation;
+    const { sourceRe, sourceIm } = this.#nodal.tables[network]!;
+    this.#order = order;
+    this.#offset = 2 * order * this.#n * this.#n;
+    this.#alpha = exponent[order]!;
+    this.#backgroundV = backgroundV[order]!;
+    this.#sourceOhm = magnitude(sourceRe[order]!, sourceIm[order]!);
+  }
 
-  connect(stages: readonly ComplexColumn[], vector: Int32Array): void {
+  // Returns |Y| of the bank [S].
+  #connect(stages: readonly ComplexColumn[], vector: Int32Array): number {
+    let bankRe = 0;
+    let bankIm = 0;
     for (let g = 0; g < stages.length; g++) {
-      this.#bankRe += vector[g]! * stages[g]!.re[this.#order]!;
-      this.#bankIm += vector[g]! * stages[g]!.im[this.#order]!;
+      bankRe += vector[g]! * stages[g]!.re[this.#order]!;
+      bankIm += vector[g]! * stages[g]!.im[this.#order]!;
     }
-    const at = this.#at(this.#bankNode, this.#bankNode);
-    const re = 1 + this.#bankRe * this.#z[at]! - this.#bankIm * this.#z[at + 1]!;
-    const im = this.#bankRe * this.#z[at + 1]! + this.#bankIm * this.#z[at]!;
+    const at = this.#offset + 2 * this.#bankNode * (this.#n + 1);
+    const zRe = this.#z[at]!;
+    const zIm = this.#z[at + 1]!;
+    const re = 1 + bankRe * zRe - bankIm * zIm;
+    const im = bankRe * zIm + bankIm * zRe;
+    const square = re * re + im * im;
     this.#loopRe = re;
     this.#loopIm = im;
-    const square = re * re + im * im;
-    this.#factorRe = (this.#bankRe * re + this.#bankIm * im) / square;
-    this.#factorIm = (this.#bankIm * re - this.#bankRe * im) / square;
+    this.#loopSquare = square;
+    this.#factorRe = (bankRe * re + bankIm * im) / square;
+    this.#factorIm = (bankIm * re - bankRe * im) / square;
+    return magnitude(bankRe, bankIm);
   }
 
-  bankSiemens(): number {
-    return Math.sqrt(this.#bankRe ** 2 + this.#bankIm ** 2);
+  // Buses that are one node have one voltage.
+  #voltagesInto({ buses }: Flow, busNode: Int32Array): void {
+    const { firstBus } = this.#currents;
+    for (let bus = 0; bus < buses.length; bus++) {
+      const first = firstBus[bus]!;
+      if (first === bus) this.#rowInto(busNode[bus]!);
+      buses[bus]!.voltageV[this.#order] = first === bus ? this.#voltageV() : buses[first]!.voltageV[this.#order]!;
+    }
   }
 
-  voltageV(node: number): number {
-    let v = this.#ofPhasors(node);
-    for (let j = 0; j < this.#n; j++) {
-      const injected = this.#injectedA[j]!;
-      if (injected > 0) v = combine(v, magnitude(this.#transfer(node, j)) * injected, this.#alpha);
+  #rowInto(node: number): void {
+    const { nodes } = this.#currents;
+    for (let k = 0; k < nodes.length; k++) this.#transferInto(node, nodes[k]!, 2 * k);
+    const last = 2 * nodes.length;
+    if (this.#backgroundV === 0) return;
+    this.#transferInto(node, this.#sourceNode, last);
+    this.#toSourceRe = this.#row[last]!;
+    this.#toSourceIm = this.#row[last + 1]!;
+  }
+
+  #transferInto(row: number, column: number, to: number): void {
+    const z = this.#z;
+    const out = this.#row;
+    const at = this.#offset + 2 * (row * this.#n + column);
+    const re = z[at]!;
+    const im = z[at + 1]!;
+    if (row === this.#bankNode || column === this.#bankNode) {
+      // Z_pb = z_pb/(1 + Y·z_bb): beside the bank's tuned order the difference would be all rounding.
+      out[to] = (re * this.#loopRe + im * this.#loopIm) / this.#loopSquare;
+      out[to + 1] = (im * this.#loopRe - re * this.#loopIm) / this.#loopSquare;
+      return;
+    }
+    const a = this.#offset + 2 * (row * this.#n + this.#bankNode);
+    const b = this.#offset + 2 * (this.#bankNode * this.#n + column);
+    const pRe = z[a]! * z[b]! - z[a + 1]! * z[b + 1]!;
+    const pIm = z[a]! * z[b + 1]! + z[a + 1]! * z[b]!;
+    out[to] = re - (pRe * this.#factorRe - pIm * this.#factorIm);
+    out[to + 1] = im - (pRe * this.#factorIm + pIm * this.#factorRe);
+  }
+
+  // At the node of the row.
+  #voltageV(): number {
+    const { nodes, magnitudeA } = this.#currents;
+    const from = this.#order * nodes.length;
+    let v = this.#ofPhasors();
+    for (let k = 0; k < nodes.length; k++) {
+      const injected = magnitudeA[from + k]!;
+      if (injected > 0) v = combine(v, magnitude(this.#row[2 * k]!, this.#row[2 * k + 1]!) * injected, this.#alpha);
     }
     if (this.#backgroundV === 0) return v;
-    const share = magnitude(this.#transfer(node, this.#sourceNode)) / this.#sourceOhm();
+    const share = magnitude(this.#toSourceRe, this.#toSourceIm) / this.#sourceOhm;
     return combine(v, share * this.#backgroundV, this.#alpha);
   }
 
-  sourceA(): number {
-    let a = this.#ofPhasors(this.#sourceNode) / this.#sourceOhm();
-    for (let j = 0; j < this.#n; j++) {
-      const injected = this.#injectedA[j]!;
+  // With the row of the source's node.
+  #sourceA(sourceRe: number, sourceIm: number): number {
+    const { nodes, magnitudeA } = this.#currents;
+    const from = this.#order * nodes.length;
+    let a = this.#ofPhasors() / this.#sourceOhm;
+    for (let k = 0; k < nodes.length; k++) {
+      const injected = magnitudeA[from + k]!;
       if (injected === 0) continue;
-      a = combine(a, (magnitude(this.#transfer(this.#sourceNode, j)) * injected) / this.#sourceOhm(), this.#alpha);
+      const ohm = magnitude(this.#row[2 * k]!, this.#row[2 * k + 1]!);
+      a = combine(a, (ohm * injected) / this.#sourceOhm, this.#alpha);
     }
     if (this.#backgroundV === 0) return a;
     // E·(1 − Z_ss/Z_s)/Z_s = E·(Z_s − Z_ss)/Z_s²
-    const [re, im] = this.#transfer(this.#sourceNode, this.#sourceNode);
-    const rest = magnitude([this.#sourceRe - re, this.#sourceIm - im]);
-    return combine(a, (this.#backgroundV * rest) / this.#sourceOhm() ** 2, this.#alpha);
+    const rest = magnitude(sourceRe - this.#toSourceRe, sourceIm - this.#toSourceIm);
+    return combine(a, (this.#backgroundV * rest) / (this.#sourceOhm * this.#sourceOhm), this.#alpha);
   }
 
   // |Σ Z_ij·I_j| over the loads with angles: they add before their magnitude is taken.
-  #ofPhasors(node: number): number {
+  #ofPhasors(): number {
+    const { nodes, re, im } = this.#currents;
+    const from = this.#order * nodes.length;
     let sumRe = 0;
     let sumIm = 0;
-    for (let j = 0; j < this.#n; j++) {
-      const aRe = this.#phasorRe[j]!;
-      const aIm = this.#phasorIm[j]!;
+    for (let k = 0; k < nodes.length; k++) {
+      const aRe = re[from + k]!;
+      const aIm = im[from + k]!;
       if (aRe === 0 && aIm === 0) continue;
-      const [re, im] = this.#transfer(node, j);
-      sumRe += re * aRe - im * aIm;
-      sumIm += re * aIm + im * aRe;
+      const zRe = this.#row[2 * k]!;
+      const zIm = this.#row[2 * k + 1]!;
+      sumRe += zRe * aRe - zIm * aIm;
+      sumIm += zRe * aIm + zIm * aRe;
     }
-    return magnitude([sumRe, sumIm]);
-  }
-
-  #sourceOhm(): number {
-    return Math.sqrt(this.#sourceRe ** 2 + this.#sourceIm ** 2);
-  }
-
-  #at(row: number, column: number): number {
-    return this.#offset + 2 * (row * this.#n + column);
-  }
-
-  #transfer(row: number, column: number): [number, number] {
-    const at = this.#at(row, column);
-    if (row === this.#bankNode || column === this.#bankNode) return this.#divided(at);
-    const toBank = this.#at(row, this.#bankNode);
-    const fromBank = this.#at(this.#bankNode, column);
-    const z = this.#z;
-    const pRe = z[toBank]! * z[fromBank]! - z[toBank + 1]! * z[fromBank + 1]!;
-    const pIm = z[toBank]! * z[fromBank + 1]! + z[toBank + 1]! * z[fromBank]!;
-    return [
-      z[at]! - (pRe * this.#factorRe - pIm * this.#factorIm),
-      z[at + 1]! - (pRe * this.#factorIm + pIm * this.#factorRe),
-    ];
-  }
-
-  // Z_pb = z_pb/(1 + Y·z_bb): beside the bank's tuned order the difference would be all rounding.
-  #divided(at: number): [number, number] {
-    const square = this.#loopRe * this.#loopRe + this.#loopIm * this.#loopIm;
-    const re = this.#z[at]!;
-    const im = this.#z[at + 1]!;
-    return [(re * this.#loopRe + im * this.#loopIm) / square, (im * this.#loopRe - re * this.#loopIm) / square];
+    return magnitude(sumRe, sumIm);
   }
 }
 
-function magnitude([re, im]: [number, number]): number {
+function magnitude(re: number, im: number): number {
   return Math.sqrt(re * re + im * im);
 }

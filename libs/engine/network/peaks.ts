@@ -123,12 +123,12 @@ export class PeakFinder {
   // vanishes against what it changes by from step to step, and the place is looked at more closely.
   #withShoulders(peaks: Peak[], square: Float64Array, exact: (h: number) => number): Peak[] {
     const found = [...peaks];
-    for (let i = 1; i < square.length - 2; i++) {
-      if (!isShoulder(this.#ordersH, square, i)) continue;
+    for (let i = nextShoulder(this.#ordersH, square, 1); i < square.length - 2; ) {
       for (const orderH of hiddenMinima(exact, this.#ordersH[i - 1]!, this.#ordersH[i + 2]!)) {
         if (found.some((peak) => Math.abs(peak.orderH - orderH) < SAME_PEAK_H)) continue;
         found.push({ orderH, impedanceOhm: 1 / Math.sqrt(exact(orderH)) });
       }
+      i = nextShoulder(this.#ordersH, square, i + 1);
     }
     return found.sort((a, b) => a.orderH - b.orderH);
   }
@@ -192,9 +192,26 @@ function nearOrders(ordersH: Float64Array, present: Float64Array, reachH: number
   });
 }
 
-function isShoulder(ordersH: Float64Array, square: Float64Array, i: number): boolean {
-  const slope = (k: number): number => (square[k + 1]! - square[k]!) / (ordersH[k + 1]! - ordersH[k]!);
-  const [before, here, after] = [slope(i - 1), slope(i), slope(i + 1)];
+// The place of the next shoulder; where there is none, the last that could be one or beyond. Slopes go from step to step.
+function nextShoulder(ordersH: Float64Array, square: Float64Array, from: number): number {
+  const end = square.length - 2;
+  if (from >= end) return end;
+  let before = slopeAt(ordersH, square, from - 1);
+  let here = slopeAt(ordersH, square, from);
+  for (let i = from; i < end; i++) {
+    const after = slopeAt(ordersH, square, i + 1);
+    if (isShoulder(before, here, after)) return i;
+    before = here;
+    here = after;
+  }
+  return end;
+}
+
+function slopeAt(ordersH: Float64Array, square: Float64Array, k: number): number {
+  return (square[k + 1]! - square[k]!) / (ordersH[k + 1]! - ordersH[k]!);
+}
+
+function isShoulder(before: number, here: number, after: number): boolean {
   if (before * here <= 0 || here * after <= 0) return false;
   if (Math.abs(here) > Math.abs(before) || Math.abs(here) >= Math.abs(after)) return false;
   return Math.abs(here) < Math.max(Math.abs(before - here), Math.abs(after - here));

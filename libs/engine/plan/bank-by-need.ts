@@ -57,6 +57,7 @@ interface Sieve {
 function firstWithin({ candidates, mayBeClear, verdictOf }: Sieve, list: readonly Candidate[]): Candidate | null {
   let watched: Candidate | null = null;
   for (const candidate of list) {
+    if (candidates.isRuledOut(candidate)) continue;
     const flows = candidates.flows(candidate);
     if (flows === null || flows === 'avoid' || (watched !== null && flows === 'watch')) continue;
     const verdict = verdictOf(candidate);

@@ -1,6 +1,6 @@
 import { NEAR_RATIO } from '../duty/duty-row.js';
 import type { JudgeBasis } from '../duty/judge-bank.js';
-import { quickJudge } from '../duty/quick-judge.js';
+import { LimitWitnesses, quickJudge } from '../duty/quick-judge.js';
 import { CAPACITOR_RULES, graver, type Verdict } from '../duty/rules.js';
 import type { Bank } from '../layout/bank.js';
 import { bankOf, type Layout, layouts, preferred, type SettledCatalogue, type Sized } from '../layout/candidates.js';
@@ -35,6 +35,7 @@ export class BankCandidates {
   readonly #catalogue: SettledCatalogue;
   readonly #layouts: Layout[];
   readonly #families = new Map<string, Family>();
+  readonly #witnesses = new LimitWitnesses();
 
   /**
    * @param judged settled site and its network
@@ -99,6 +100,16 @@ export class BankCandidates {
   }
 
   /**
+   * Does a candidate pass a limit where others did before; a few flows instead of all.
+   * @param candidate one of the list
+   * @returns true where `flows`, not asked yet, would say `avoid` or null
+   * @source method-limits
+   */
+  isRuledOut({ family, bank }: Candidate): boolean {
+    return family.built === undefined && this.#witnesses.speakAgainst(this.#judged.model, bank, this.basis(bank));
+  }
+
+  /**
    * What a bank is judged by, with the site's controller.
    * @param bank the bank
    * @returns rules, voltages, supply, loads and delay
@@ -143,6 +154,7 @@ export class BankCandidates {
     for (const ratedV of voltages) {
       const bank = this.#bank(layout, ratedV, reactorPct);
       const quick = quickJudge(this.#judged.model, bank, this.basis(bank));
+      this.#witnesses.learn(this.#judged.model, quick);
       if (quick.voltages === 'clear') return { ratedV, flows: this.#opened(quick.verdict) };
     }
     return null;

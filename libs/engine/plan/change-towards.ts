@@ -33,17 +33,19 @@ export function changeTowards<T>(
 ): { factor: number; value: T } | null {
   let same = 1;
   for (const next of evenFactors(end, steps)) {
-    if (valueAt(next) === present) {
+    let value = valueAt(next);
+    if (value === present) {
       same = next;
       continue;
     }
     let other = next;
     while (Math.abs(other - same) > closedIn * Math.max(same, other)) {
       const middle = (same + other) / 2;
-      if (valueAt(middle) === present) same = middle;
-      else other = middle;
+      const found = valueAt(middle);
+      if (found === present) same = middle;
+      else [other, value] = [middle, found];
     }
-    return { factor: other, value: valueAt(other) };
+    return { factor: other, value };
   }
   return null;
 }

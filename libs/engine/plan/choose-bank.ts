@@ -73,6 +73,7 @@ class Chooser {
     let watched: Chosen | null = null;
     for (const [k, candidate] of reaching.entries()) {
       this.#step(k / reaching.length);
+      if (this.#candidates.isRuledOut(candidate)) continue;
       const flows = this.#flows(candidate);
       if (flows === null || flows === 'avoid' || (watched !== null && flows === 'watch')) continue;
       const operated = this.#leastSetPoint(candidate);

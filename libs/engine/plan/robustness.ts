@@ -1,7 +1,7 @@
 import type { Duty } from '../duty/duty-row.js';
 import { closingDuties } from '../duty/judge-bank.js';
 import { couplesAtPrimary } from '../duty/limits-point.js';
-import { type FirmVerdict, firmVerdict } from '../duty/quick-judge.js';
+import { firmVerdict, LimitWitnesses } from '../duty/quick-judge.js';
 import type { Verdict } from '../duty/rules.js';
 import type { Bank } from '../layout/bank.js';
 import { bankLevels } from '../layout/levels.js';
@@ -67,8 +67,9 @@ const CLOSED_IN = 1e-3;
  */
 export function robustness(study: Judged, bank: Bank, control: Control): Robustness {
   const closing = closingDuties(study.model, bank, bankLevels(bank, study.site.nominalV), basisOf(study, control));
+  const witnesses = new LimitWitnesses();
   const judgedAt = (quantity: MovedQuantity, factor: number): Verdict =>
-    overallVerdict(study, judgeMoved(study, bank, control, { quantity, factor, closing }));
+    overallVerdict(study, judgeMoved(study, bank, control, { quantity, factor, closing, witnesses }));
   const present = judgedAt('load', 1);
   return {
     ranges: MOVED_QUANTITIES.filter((quantity) => applies(study.site, quantity)).map((quantity) => {
@@ -94,21 +95,30 @@ function applies(site: SettledSite, quantity: MovedQuantity): boolean {
   return quantity !== 'background' || (site.loads.backgroundPct ?? []).length > 0;
 }
 
+/** A quantity moved by a factor. */
+interface Move {
+  quantity: MovedQuantity;
+  factor: number;
+  closing?: readonly Duty[];
+  witnesses?: LimitWitnesses;
+}
+
 /**
  * The bank judged with one quantity moved; the record itself is not simulated again, since duties rest on the network.
  * @param study site and network
  * @param bank the bank
  * @param control settings
- * @param moved what is moved, by which factor; rows of exact inrush where they are known
- * @returns the judgement
+ * @param moved what is moved, by which factor; rows of exact inrush where they are known; corners that are worth looking
+ *   at first
+ * @returns the verdict
  * @source method-robustness
  */
 export function judgeMoved(
   study: Judged,
   bank: Bank,
   control: Control,
-  { quantity, factor, closing }: { quantity: MovedQuantity; factor: number; closing?: readonly Duty[] },
-): FirmVerdict {
+  { quantity, factor, closing, witnesses }: Move,
+): { verdict: Verdict } {
   const { site, model } = study;
   const loads =
     quantity === 'load' || quantity === 'background' ? movedLoads(site.loads, quantity, factor) : site.loads;
@@ -126,7 +136,10 @@ export function judgeMoved(
   const basis = { ...basisOf(study, control), supply, loads };
   // Harmonics have no part in a closing.
   const closes = quantity === 'load' || quantity === 'background' ? closing : undefined;
-  return firmVerdict(moved, aged, basis, closes);
+  if (witnesses?.speakAgainst(moved, aged, basis) === true) return { verdict: 'avoid' };
+  const found = firmVerdict(moved, aged, basis, closes);
+  witnesses?.learn(moved, found);
+  return found;
 }
 
 function movedLoads(loads: Loads, quantity: 'load' | 'background', factor: number): Loads {

@@ -75,7 +75,7 @@ export const GERMAN_ASSUMPTION_MESSAGES: Readonly<Record<string, Translation>> =
     'Auch sie messen oder mit den Datenblättern der Lasten vergleichen.',
   ),
   'network.besideNotSimulated': said(
-    '{name} an {bus} ist mit jeder Zahl seiner Stufen beurteilt, die zugeschaltet sein können. Wie es geschaltet wird, ist nicht simuliert: Was es während der Aufzeichnung abgab, bleibt im Lastgang.',
+    '{name} an {bus} ist mit jeder Zahl seiner Stufen beurteilt, die zugeschaltet sein können. Wie es geschaltet wird, ist nicht simuliert: Was es während der Aufzeichnung abgab, bleibt im Lastgang. Spannung und Strom seiner Kondensatoren sind neben dieser Anlage beurteilt, seine eigenen Schaltspiele, Zuschaltungen, Entladung, Geräte und Einstellungen nicht.',
     'Auch als Anlage des Standorts beurteilen, mit dieser unter den Anlagen des Netzes.',
   ),
   'network.cables.steady': said(
