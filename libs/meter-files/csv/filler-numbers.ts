@@ -19,7 +19,8 @@ const NEAR_RATIO = 0.2;
 
 /**
  * Takes out numbers that stand for a missing value: below zero where nothing else of the column is, and beyond three times
- * anything else. Another that has no neighbour like it stays and has to be asked about. A record in the program's own form
+ * anything else. Another that has no neighbour like it stays and has to be asked about, but for a run of them that lies
+ * between two like it, one on either side. A record in the program's own form
  * leaves out what is missing, and has none.
  * @param reader rows as read; what is taken out becomes NaN
  * @param layout its columns
@@ -72,18 +73,39 @@ function isFiller(value: number): boolean {
 
 function takeFrom(values: Float64Array, found: FillerNumbers, all: boolean): RowSet {
   const open = new RowSet();
-  const { least, most } = rangeOf(values);
+  const range = rangeOf(values);
+  let run: Run = { from: 0, end: 0, before: Number.NaN, after: Number.NaN };
   for (let row = 0; row < values.length; row++) {
     const value = values[row]!;
     if (!isFiller(value)) continue;
-    const below = value < 0 && !(least < 0);
-    const far = Math.abs(value) > FAR_TIMES * Math.max(most, -least);
-    if ((below && far) || all) {
+    if (row >= run.end) run = runFrom(values, row);
+    if (all || isOutside(value, range)) {
       if (found.taken++ === 0) found.value = value;
       values[row] = Number.NaN;
-    } else if (!goesOn(values, row)) open.add(row);
+    } else if (!goesOn(value, row, run)) open.add(row);
   }
   return open;
+}
+
+/** Such numbers on end. */
+interface Run {
+  from: number;
+  /** row behind the last */
+  end: number;
+  /** the numbers on either side; NaN where there is none */
+  before: number;
+  after: number;
+}
+
+function runFrom(values: Float64Array, from: number): Run {
+  let end = from + 1;
+  while (end < values.length && isFiller(values[end]!)) end++;
+  return { from, end, before: values[from - 1] ?? Number.NaN, after: values[end] ?? Number.NaN };
+}
+
+/** Below zero where no other number is, and far from all others. */
+function isOutside(value: number, { least, most }: { least: number; most: number }): boolean {
+  return value < 0 && !(least < 0) && Math.abs(value) > FAR_TIMES * Math.max(most, -least);
 }
 
 /** Least and greatest of the other numbers; both 0 where there are none but zeros. */
@@ -97,11 +119,16 @@ function rangeOf(values: Float64Array): { least: number; most: number } {
   return { least, most };
 }
 
-/** Whether the nearest number on either side that is no such number itself is about as large. */
-function goesOn(values: Float64Array, row: number): boolean {
-  const value = values[row]!;
-  return [-1, 1].some((step) => {
-    const beside = values[row + step] ?? Number.NaN;
-    return !isFiller(beside) && Math.abs(beside - value) <= NEAR_RATIO * Math.abs(value);
-  });
+/**
+ * Whether the column goes on with a number: a neighbour that is no such number itself is about as large, or the column
+ * passes through it, however long it stands still there, as a register does.
+ */
+function goesOn(value: number, row: number, { from, end, before, after }: Run): boolean {
+  const [behind, ahead] = [isNear(value, before), isNear(value, after)];
+  if ((behind && row === from) || (ahead && row === end - 1)) return true;
+  return behind && ahead && before <= value === value <= after;
+}
+
+function isNear(value: number, beside: number): boolean {
+  return Math.abs(beside - value) <= NEAR_RATIO * Math.abs(value);
 }

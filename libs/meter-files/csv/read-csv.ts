@@ -4,6 +4,7 @@ import type { MeterBytes } from '../meter-bytes.js';
 import type { MeterReading, ReadOptions } from '../meter-format.js';
 import { note } from '../note.js';
 import { closeReading } from '../record/close-reading.js';
+import { strangeFile } from '../unknown-format.js';
 import { type CsvLayout, findLayout, untoldColumns } from './csv-layout.js';
 import type { CsvFile } from './csv-meaning.js';
 import { DayRows } from './day-rows.js';
@@ -31,7 +32,7 @@ const VIEW_BYTES = 262_144;
 export async function readCsv(source: MeterBytes, options: ReadOptions, lane: Lane = 'quick'): Promise<MeterReading> {
   const map = options.map ?? {};
   const buffer = new RowBuffer(source);
-  const layout = await layoutOf(buffer, options);
+  const layout = await layoutOf(buffer, options, source.head);
   const file = { layout, map, options };
   const read = layout.days === null ? await meterRead(buffer, file, lane) : await daysRead(buffer, file);
   const result = settleMeaning(read.file);
@@ -121,7 +122,7 @@ function firstOf(file: UnreadFile, reader: MeterReader, room: ReadingRoom) {
   }
 }
 
-async function layoutOf(buffer: RowBuffer, { map = {} }: ReadOptions): Promise<CsvLayout> {
+async function layoutOf(buffer: RowBuffer, { map = {} }: ReadOptions, head: Uint8Array): Promise<CsvLayout> {
   let untold: Problem | null = null;
   for (;;) {
     while (isShort(buffer) && (await buffer.more())) buffer.refuseEndlessRow();
@@ -138,7 +139,7 @@ async function layoutOf(buffer: RowBuffer, { map = {} }: ReadOptions): Promise<C
   }
   if (untold !== null) throw new InputProblem([untold]);
   const expected = 'a meter file: delimited text under a header row, or NEM12';
-  throw new InputProblem([{ code: 'unknown-format', expected, found: 'a file without a row of column names' }]);
+  throw new InputProblem([strangeFile(head, { expected, found: 'a file without a row of column names' })]);
 }
 
 /** Reads on until a further row is whole: in a row that only grows there is nothing new to look for. */

@@ -155,6 +155,21 @@ describe('numbers that stand for missing values', () => {
     );
     expect(noteCodes(reading)).not.toContain('fillers-left-out');
   });
+
+  it('are values where a column stands still at one on its way, and asked about where it comes back', async () => {
+    const through = (...kw: number[]) =>
+      `Time,kW,kvar\n${kw.map((one, i) => `2024-05-06 0${i}:00,${one},20\n`).join('')}`;
+    const read = async (...kw: number[]) => Array.from((await readMeterText(through(...kw))).record.activeKw);
+    expect(await read(998, 999, 999, 999, 1000)).toEqual([998, 999, 999, 999, 1000]);
+    expect(await read(1000, 999, 999, 999, 998)).toEqual([1000, 999, 999, 999, 998]);
+    for (const kw of [
+      [950, 999, 999, 999, 960],
+      [998, 999, 999, 999],
+      [998, 999, 999, 999, 3000],
+    ]) {
+      expect((await questionOf(through(...kw))).questions.map(({ id }) => id)).toEqual(['fillers']);
+    }
+  });
 });
 
 describe('a broken quotation mark', () => {
