@@ -4,7 +4,7 @@ import { note } from '../note.js';
 import { RowSet } from '../row-set.js';
 import { isRecordForm } from '../write-record-csv.js';
 import type { CsvLayout } from './csv-layout.js';
-import type { FillerNumbers, ReadRows } from './csv-meaning.js';
+import type { CsvFile, CsvMeaning, FillerNumbers, ReadRows } from './csv-meaning.js';
 
 /** Numbers that programs write where they have none: nines, and the ends of whole numbers of 16 and 32 bits. */
 const FILLERS = new Set([
@@ -42,14 +42,23 @@ export function takeFillers(reader: ReadRows, layout: CsvLayout, { fillers }: Me
 }
 
 /**
- * What is worth saying of them.
- * @param found what was taken out
- * @param layout names of the columns
+ * What is worth saying of them: those that were taken out, and those that may be values as well but leave no record if
+ * they are, so that nobody is asked.
+ * @param file its rows and what was taken out
+ * @param meaning what the file is read under
  */
-export function fillerNotes({ taken, value, columns }: FillerNumbers, { names }: CsvLayout): Remark[] {
-  if (taken === 0) return [];
+export function fillerNotes({ layout: { names }, fillers, reader }: CsvFile, meaning: CsvMeaning): Remark[] {
+  const wanted = new Set(meaning.choice.columns.map(({ column }) => column));
+  const open = [...(meaning.fillers === 'missing' ? (fillers.open ?? []) : [])]
+    .map(([k, rows]) => ({ k, rows, column: reader.columns[k]! }))
+    .filter(({ column }) => wanted.has(column));
+  const values = open.reduce((sum, { rows }) => sum + rows.size, fillers.taken);
+  if (values === 0) return [];
+  const [first] = open;
+  const value = fillers.taken > 0 ? fillers.value : reader.rows.values[first!.k]![[...first!.rows][0]!]!;
+  const columns = [...new Set([...fillers.columns, ...open.map(({ column }) => column)])];
   const listed = columns.map((column) => names[column] || `column ${column + 1}`).join(', ');
-  return [note('fillers-left-out', { values: taken, value, columns: listed })];
+  return [note('fillers-left-out', { values, value, columns: listed })];
 }
 
 /** Every file passes it: four small numbers at a time are passed over, which takes half as long as one by one. */

@@ -9,6 +9,7 @@ import type { CsvFile, CsvMeaning } from './csv-meaning.js';
 import { readUnder } from './csv-reading.js';
 import { energyColumns, movesOf } from './energy-registers.js';
 import { hasNegative } from './power-factor.js';
+import { fillerNotes } from './filler-numbers.js';
 import { ReadingRoom, type ShownUnder, shownUnder } from './shown-reading.js';
 
 /** What a file leaves open, with every answer there is. */
@@ -249,11 +250,22 @@ function mapOf(point: Point, meaning: CsvMeaning): MeterMap {
   }
 }
 
-function settledNotes({ reader, map }: CsvFile, points: OpenPoints, meaning: CsvMeaning): Remark[] {
+/** Channels whose rows no record is made of; of those that measure something, the ones that another is taken before. */
+function channelNotes({ reader: { leftOut }, layout: { names } }: CsvFile, { choice }: CsvMeaning): Remark[] {
+  if (leftOut === undefined) return [];
+  const used = new Set(choice.columns.map(({ column }) => column));
+  const channels = [...leftOut, ...names.filter((_, column) => !used.has(column))];
+  return channels.length === 0 ? [] : [note('channels-left-out', { channels: channels.join(', ') })];
+}
+
+function settledNotes(file: CsvFile, points: OpenPoints, meaning: CsvMeaning): Remark[] {
+  const { reader, map } = file;
   const { mark, rows } = reader;
   const divided = meaning.decimal === ',' ? mark.openDots.count : meaning.decimal === '.' ? mark.openCommas.count : 0;
   const settledDates = (rows.dateForm === 'slashed' || rows.dateForm === 'short') && map.dateOrder === undefined;
   return [
+    ...channelNotes(file, meaning),
+    ...fillerNotes(file, meaning),
     ...(meaning.decimal === ',' && map.decimal === undefined ? [note('decimal-mark-settled', { mark: ',' })] : []),
     ...(divided > 0 ? [note('thousands-divided', { numbers: divided })] : []),
     ...(settledDates && points.order.length === 1 ? [note('date-order-settled', { order: meaning.order })] : []),
