@@ -15,6 +15,7 @@ import { readMeterText } from '../support/meter-text.js';
 import { Chance } from '../support/mutate-file.js';
 import { runs, SEED, tellTotals } from '../support/soak.js';
 import { SlowRefusal } from '../support/slow-meter-reading.js';
+import { timed } from '../support/timed.js';
 import { SlowUnsure } from '../support/slow-xml-reading.js';
 
 const FILES = runs(1_000, 20_000);
@@ -37,15 +38,6 @@ function heldBytes(): number {
 function sampleOf(n: number): FormatSample {
   const of = n % 2 === 0 ? JUDGED : SAMPLES;
   return of[Math.floor(n / 2) % of.length]!;
-}
-
-/** How long work takes, leaving out the time in which other programs had the processor [ms]. */
-async function timed<T>(work: () => Promise<T>): Promise<{ outcome: T; ms: number }> {
-  const startMs = performance.now();
-  const start = process.cpuUsage();
-  const outcome = await work();
-  const { user, system } = process.cpuUsage(start);
-  return { outcome, ms: Math.min(performance.now() - startMs, (user + system) / 1000) };
 }
 
 type Fate = 'refused' | 'accepted' | 'judged' | 'answered';

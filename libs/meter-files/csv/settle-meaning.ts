@@ -156,19 +156,30 @@ function settledMeaning(
   { all, room }: { all: readonly CsvMeaning[]; room: ReadingRoom },
 ): CsvMeaning {
   const attempts: Attempt[] = [];
+  const conflicts = new Map<CsvMeaning['choice'], ConflictingRows>();
   for (const meaning of all) {
     try {
       attempts.push({ meaning, ...shownUnder(file, meaning, room) });
     } catch (problem) {
       if (!(problem instanceof InputProblem)) throw problem;
+      if (problem instanceof ConflictingRows) conflicts.set(meaning.choice, problem);
     }
   }
+  keepConflicting(conflicts, attempts);
   const [first] = attempts;
   // none can be: the reading as a whole is refused with all its problems
   if (first === undefined) return all[0]!;
   const questions = (Object.keys(points) as Point[]).flatMap((point) => asked(point, attempts));
   if (questions.length > 0) throw new Question(questions);
   return first.meaning;
+}
+
+/** Rows that disagree are asked about: they do not say that the columns they stand in are the wrong ones. */
+function keepConflicting(conflicts: Map<CsvMeaning['choice'], ConflictingRows>, attempts: readonly Attempt[]): void {
+  if (attempts.length === 0) return;
+  for (const [choice, problem] of conflicts) {
+    if (!attempts.some(({ meaning }) => meaning.choice === choice)) throw problem;
+  }
 }
 
 function meanings(points: OpenPoints): CsvMeaning[] {

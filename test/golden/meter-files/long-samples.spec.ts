@@ -66,6 +66,27 @@ describe('a row for each channel and moment', () => {
     expect((await questionOf(twice)).questions.map(({ id }) => id)).toEqual(['keepRow']);
   });
 
+  it('asks which columns are meant, where one of two has rows that disagree', async () => {
+    const text = (first: string, repeated: string) =>
+      lines(
+        'Time,Channel,Value,Unit',
+        `2024-05-06 00:00,${first},40,kW`,
+        '2024-05-06 00:00,Reactive power,20,kvar',
+        ...[1, 2, 3].flatMap((i) => [
+          `2024-05-06 0${i}:00,Active power,${40 + i},kW`,
+          `2024-05-06 0${i}:00,Reactive power,20,kvar`,
+        ]),
+        repeated,
+      );
+    const twice = '2024-05-06 02:00,Active power,99,kW';
+    const ids = async (file: string) => (await questionOf(file)).questions.map(({ id }) => id);
+    // the one interval of the tower would otherwise be the record, since nothing in it disagrees
+    expect(await ids(text('Active tower', twice))).toContain('columns');
+    expect(await ids(text('Active power', twice))).toEqual(['keepRow']);
+    expect(await ids(text('Active tower', ''))).toEqual(['columns']);
+    expect((await readMeterText(text('Active power', ''))).record.beginS).toHaveLength(4);
+  });
+
   it('names a channel that measures something and is left for another', async () => {
     const text = lines(
       'Time,Channel,Value,Unit',
