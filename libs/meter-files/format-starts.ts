@@ -80,8 +80,16 @@ export function isEspi(head: Uint8Array): boolean {
 export function isPlainText(head: Uint8Array): boolean {
   const start = head.subarray(0, TEXT_HEAD_BYTES);
   let strange = 0;
-  for (const byte of start) if (byte < 0x09 || (byte > 0x0d && byte < 0x20)) strange++;
+  for (const byte of start) if (isStrange(byte)) strange++;
   return strange * FEW <= start.length && xmlStart(head) === '';
+}
+
+/**
+ * Whether a byte is a character that no text holds, such as NUL.
+ * @param byte of a file that agrees with ASCII
+ */
+export function isStrange(byte: number): boolean {
+  return byte < 0x09 || (byte > 0x0d && byte < 0x20);
 }
 
 /**

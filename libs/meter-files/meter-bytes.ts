@@ -155,19 +155,50 @@ function withoutMark(head: Uint8Array): Uint8Array {
 async function* decodedChunks(raw: AsyncGenerator<Uint8Array>, encoding: Encoding): AsyncGenerator<Uint8Array> {
   const decoder = new TextDecoder(encoding, { fatal: true });
   const encoder = new TextEncoder();
+  // where the text of the chunks before ends
+  const place = { row: 1, column: 1 };
+  const taken = (chunk: Uint8Array | null): string => {
+    try {
+      return chunk === null ? decoder.decode() : decoder.decode(chunk, { stream: true });
+    } catch {
+      movePast(soundText(chunk, encoding), place);
+      const problem = {
+        code: 'unreadable',
+        ...place,
+        expected: 'text in UTF-16',
+        found: 'bytes that are none',
+      } as const;
+      throw new InputProblem([problem]);
+    }
+  };
   for await (const chunk of raw) {
-    const bytes = encoder.encode(decoded(decoder, chunk));
+    const text = taken(chunk);
+    movePast(text, place);
+    const bytes = encoder.encode(text);
     if (bytes.length > 0) yield bytes;
   }
-  decoded(decoder, null);
+  taken(null);
 }
 
-function decoded(decoder: InstanceType<typeof TextDecoder>, chunk: Uint8Array | null): string {
-  try {
-    return chunk === null ? decoder.decode() : decoder.decode(chunk, { stream: true });
-  } catch {
-    throw new InputProblem([{ code: 'unreadable', expected: 'text in UTF-16', found: 'bytes that are none' }]);
+function movePast(text: string, place: { row: number; column: number }): void {
+  let from = 0;
+  for (let at = text.indexOf('\n'); at >= 0; at = text.indexOf('\n', from)) {
+    place.row++;
+    place.column = 1;
+    from = at + 1;
   }
+  place.column += text.length - from;
+}
+
+/**
+ * The text of a chunk before its first bytes that are none of an encoding.
+ * @param bytes the chunk; null where the file ends within a letter
+ * @param encoding a label that `TextDecoder` knows
+ */
+export function soundText(bytes: Uint8Array | null, encoding: string): string {
+  if (bytes === null) return '';
+  const [sound = ''] = new TextDecoder(encoding).decode(bytes).split('\ufffd', 1);
+  return sound;
 }
 
 async function* again(head: Uint8Array, rest: AsyncGenerator<Uint8Array>): AsyncGenerator<Uint8Array> {

@@ -74,9 +74,9 @@ const BAD: [name: string, harmful: () => Content, sound: () => Content, problem:
   ],
   [
     'an archive within the archive',
-    () => altered(() => ({ content: workbook() })),
     () => madeZip([...parts(), { name: 'xl/media/picture.zip', content: workbook() }]),
-    { code: 'unreadable', path: SHEET },
+    () => madeZip([...parts(), { name: 'xl/media/picture.zip', content: 'no archive' }]),
+    { code: 'unreadable', path: 'xl/media/picture.zip', found: 'a nested archive' },
   ],
   [
     'an archive of a meter file',

@@ -96,7 +96,31 @@ const BAD: [name: string, bytes: () => Uint8Array, problem: object][] = [
   [
     'an archive within the archive',
     () => changed(SHEET, () => ({ content: madeWorkbook(SOUND) })),
-    { code: 'unreadable', path: SHEET },
+    { code: 'unreadable', path: SHEET, found: 'a nested archive' },
+  ],
+  [
+    'a nested archive that nothing refers to',
+    () => added({ name: 'xl/media/picture.zip', content: sound }),
+    { code: 'unreadable', path: 'xl/media/picture.zip', found: 'a nested archive' },
+  ],
+  [
+    'a nested archive under the name of a picture, as it stands',
+    () => added({ name: 'xl/media/image1.png', content: sound, stored: true }),
+    { code: 'unreadable', path: 'xl/media/image1.png', found: 'a nested archive' },
+  ],
+  [
+    'a nested archive of nothing',
+    () => added({ name: 'docProps/empty.bin', content: madeZip([]) }),
+    { code: 'unreadable', path: 'docProps/empty.bin', found: 'a nested archive' },
+  ],
+  [
+    'a nested archive behind as many parts as there may be',
+    () =>
+      added(
+        ...Array.from({ length: 1900 }, (_, i) => ({ name: `xl/media/${i}.png`, content: bomb.slice(0, 1 << 12) })),
+        { name: 'xl/media/last.png', content: sound },
+      ),
+    { code: 'unreadable', path: 'xl/media/last.png', found: 'a nested archive' },
   ],
   [
     'an archive of files',
@@ -218,9 +242,12 @@ describe('a workbook with', () => {
 
   it('nothing wrong is read, so that it is the change that is refused', async () => {
     expect((await readMeterText(madeZip(workbookParts(SOUND)))).record.beginS).toHaveLength(24);
-    expect((await readMeterText(added({ name: 'xl/media/picture.zip', content: sound }))).record.beginS).toHaveLength(
-      24,
-    );
+    // the mark of an archive elsewhere than at the beginning makes none
+    const picture = Buffer.concat([Buffer.from('\u0089PNG\r\n', 'latin1'), sound]);
+    for (const stored of [true, false]) {
+      const beside = added({ name: 'xl/media/picture.zip', content: picture, stored });
+      expect((await readMeterText(beside)).record.beginS).toHaveLength(24);
+    }
     expect((await readMeterText(within(SHEET, '<c r="B5"><v>3', '<c r="B5"><v>3.5'))).record.activeKw[3]).toBe(3.5);
   });
 });

@@ -13,8 +13,9 @@ import { answered, attempt, exportDifference, recordDifference, slowDifference }
 import { type DamagedFile, type FormatSample, formatSamples } from '../support/format-samples.js';
 import { readMeterText } from '../support/meter-text.js';
 import { Chance } from '../support/mutate-file.js';
-import { runs, SEED } from '../support/soak.js';
+import { runs, SEED, tellTotals } from '../support/soak.js';
 import { SlowRefusal } from '../support/slow-meter-reading.js';
+import { timed } from '../support/timed.js';
 import { SlowUnsure } from '../support/slow-xml-reading.js';
 
 const FILES = runs(1_000, 20_000);
@@ -37,15 +38,6 @@ function heldBytes(): number {
 function sampleOf(n: number): FormatSample {
   const of = n % 2 === 0 ? JUDGED : SAMPLES;
   return of[Math.floor(n / 2) % of.length]!;
-}
-
-/** How long work takes, leaving out the time in which other programs had the processor [ms]. */
-async function timed<T>(work: () => Promise<T>): Promise<{ outcome: T; ms: number }> {
-  const startMs = performance.now();
-  const start = process.cpuUsage();
-  const outcome = await work();
-  const { user, system } = process.cpuUsage(start);
-  return { outcome, ms: Math.min(performance.now() - startMs, (user + system) / 1000) };
 }
 
 type Fate = 'refused' | 'accepted' | 'judged' | 'answered';
@@ -97,8 +89,10 @@ describe('damaged files', () => {
       }
       if (n % 250 === 249) growth = Math.max(growth, heldBytes() - beforeBytes);
     }
+    growth = Math.max(growth, heldBytes() - beforeBytes);
+    tellTotals('all formats', { files: FILES, ...fates, failures: failures.length, growthMb: growth / 1e6 });
     expect(failures.slice(0, 20)).toEqual([]);
-    expect(Math.max(growth, heldBytes() - beforeBytes)).toBeLessThan(MOST_GROWTH);
+    expect(growth).toBeLessThan(MOST_GROWTH);
     // every way out is taken, else the damage would be too light or too heavy to show anything
     expect(fates.refused).toBeGreaterThan(FILES / 10);
     expect(fates.judged).toBeGreaterThan(FILES / 10);

@@ -8,7 +8,7 @@ import { Chance, mutate } from '../support/mutate-file.js';
 import { msconsText, profileText } from '../support/sample-messages.js';
 import { SlowRefusal } from '../support/slow-meter-reading.js';
 import { readMsconsSlowly, readProfileSlowly, type SlowRows } from '../support/slow-message-reading.js';
-import { runs, SEED } from '../support/soak.js';
+import { runs, SEED, tellTotals } from '../support/soak.js';
 
 const FILES = runs(400, 6_000);
 const SAMPLES: { format: string; text: string; slowly: (text: string) => SlowRows }[] = [
@@ -58,6 +58,7 @@ it.each(SAMPLES)(
       }
       if (performance.now() - startMs > 2_000) failures.push(`file ${n} took more than two seconds`);
     }
+    tellTotals(sample.format, { files: FILES, ...outcomes, failures: failures.length });
     expect(failures.slice(0, 20)).toEqual([]);
     // both ways out are taken, else the damage would be too light or too heavy to show anything
     expect(outcomes.accepted).toBeGreaterThan(FILES / 40);

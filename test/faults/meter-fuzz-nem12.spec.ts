@@ -6,7 +6,7 @@ import { Chance, mutate } from '../support/mutate-file.js';
 import { nem12Text } from '../support/sample-messages.js';
 import { SlowRefusal } from '../support/slow-meter-reading.js';
 import { readNem12Slowly } from '../support/slow-nem12-reading.js';
-import { runs, SEED } from '../support/soak.js';
+import { runs, SEED, tellTotals } from '../support/soak.js';
 
 const FILES = runs(500, 6_000);
 
@@ -37,6 +37,7 @@ it(`reads or refuses ${FILES} damaged NEM12 files and changes no accepted value 
       }
     }
   }
+  tellTotals('nem12', { files: FILES, ...outcomes, failures: failures.length });
   expect(failures.slice(0, 20)).toEqual([]);
   expect(outcomes.accepted).toBeGreaterThan(FILES / 10);
   expect(outcomes.refused).toBeGreaterThan(FILES / 10);

@@ -10,7 +10,7 @@ import { Readable } from 'node:stream';
 import { pipeline } from 'node:stream/promises';
 import { fileURLToPath } from 'node:url';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
-import { runs, SOAKED } from '../support/soak.js';
+import { runs, SOAKED, tellTotals } from '../support/soak.js';
 
 const LIMIT_MB = 200;
 const INTERVALS = runs(100_000, 2_000_000);
@@ -92,7 +92,7 @@ async function textOf(stream: Readable): Promise<string> {
   return text;
 }
 
-describe.each(Object.entries(WANTED))('a file of %s far larger than its record', (_, wanted) => {
+describe.each(Object.entries(WANTED))('a file of %s far larger than its record', (name, wanted) => {
   let dir: string;
   let file: string;
   let answered: string[] = [];
@@ -112,6 +112,7 @@ describe.each(Object.entries(WANTED))('a file of %s far larger than its record',
   it(`is read within ${LIMIT_MB} MB, whatever its size`, async () => {
     expect(statSync(file).size).toBeGreaterThan(SOAKED ? 1e9 : 5e7);
     const { stdout, heldMb } = await runNode([program, 'read', file, '--json', ...answered]);
+    tellTotals(`${name}, read`, { heldMb });
     // a register's last reading ends the last interval
     expect(JSON.parse(stdout).record.intervals).toBe(INTERVALS - (wanted.asks?.id === 'energy' ? 1 : 0));
     expect(heldMb).toBeLessThan(LIMIT_MB);
@@ -119,6 +120,7 @@ describe.each(Object.entries(WANTED))('a file of %s far larger than its record',
 
   it.runIf(wanted.asks !== undefined)(`is asked about within ${LIMIT_MB} MB`, async () => {
     const { stdout, heldMb } = await runNode([program, 'read', file, '--json']);
+    tellTotals(`${name}, asked about`, { heldMb });
     const [question] = JSON.parse(stdout).error.questions;
     expect([question.id, question.readings.length]).toEqual([wanted.asks!.id, 2]);
     expect(heldMb).toBeLessThan(LIMIT_MB);

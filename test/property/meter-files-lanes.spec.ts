@@ -11,7 +11,7 @@ import { runs, SEED } from '../support/soak.js';
 
 async function readBy(lane: Lane, content: string, chunkBytes: number) {
   try {
-    return await readCsv(await MeterBytes.open(streamOf(content, chunkBytes)), {}, lane);
+    return await readCsv(await MeterBytes.open(streamOf(content, chunkBytes)), {}, { lane });
   } catch (problem) {
     if (problem instanceof InputProblem) return problem.problems;
     throw problem;

@@ -15,6 +15,8 @@ function rows(count: number, row: (i: number, kw: number, kvar: number) => strin
 }
 
 const START = Date.UTC(2024, 4, 11, 22) / 1000;
+const ENERGIES = ['active energy kWh', 'reactive energy lagging kvarh', 'reactive energy leading kvarh'];
+
 /** Delimited texts with invented loads, for tests that damage files, and how each is written. */
 export const DELIMITED_TEXTS: { name: string; text: string; dialect: Dialect }[] = [
   {
@@ -64,6 +66,63 @@ export const DELIMITED_TEXTS: { name: string; text: string; dialect: Dialect }[]
         const momentS = Date.UTC(2024, 9, 26, 20) / 1000 + i * 900;
         const hours = momentS < Date.UTC(2024, 9, 27, 1) / 1000 ? 2 : 1;
         return `"${parts(momentS + hours * 3600).slice(0, 19)}+${two(hours)}:00","${kw}",${kvar}`;
+      }),
+    ].join('\n'),
+  },
+  {
+    name: 'a row for each channel and moment, in turns',
+    dialect: {
+      delimiter: ',',
+      decimal: '.',
+      dates: 'ymd',
+      stamp: 'begin',
+      long: { time: 0, channel: 1, value: 2, unit: 3, channels: ['active power [kW]', 'reactive power [kvar]'] },
+    },
+    text: [
+      'interval begin,channel,value,unit',
+      ...rows(70, (i, kw, kvar) => {
+        const stamp = parts(START + i * 900)
+          .slice(0, 16)
+          .replace('T', ' ');
+        const cells = [
+          `active power,${kw},kW`,
+          `reactive power,${i % 9 === 0 ? -kvar : kvar},kvar`,
+          `room,${18 + (i % 5) / 2},°C`,
+        ];
+        return cells.map((cell) => `${stamp},${cell}`).join('\n');
+      }),
+    ].join('\n'),
+  },
+  {
+    name: 'a row for each channel and moment, one channel after the other',
+    dialect: {
+      delimiter: ';',
+      decimal: ',',
+      dates: 'dmy',
+      stamp: 'end',
+      long: { time: 0, channel: 1, value: 2, unit: null, channels: ENERGIES },
+    },
+    text: [
+      'Interval end time;Channel;Value',
+      ...ENERGIES.flatMap((name, k) =>
+        rows(
+          60,
+          (i, kw, kvar) =>
+            `${slashed(START + 172_800 + i * 900)};${name};${String([kw, kvar, i % 3][k]).replace('.', ',')}`,
+        ),
+      ),
+    ].join('\r\n'),
+  },
+  {
+    name: 'numbers for missing ones, and a column that goes through such numbers',
+    dialect: { delimiter: ',', decimal: '.', dates: 'ymd', stamp: 'begin' },
+    text: [
+      'interval begin,active power [kW],reactive power [kvar]',
+      ...rows(150, (i, _, kvar) => {
+        const stamp = parts(START + i * 900)
+          .slice(0, 16)
+          .replace('T', ' ');
+        return `${stamp},${i % 40 === 17 ? -99_999 : 985 + Math.floor(i / 8) * 2},${i % 50 === 30 ? -32_768 : kvar}`;
       }),
     ].join('\n'),
   },

@@ -1,6 +1,8 @@
 // An independent reading of delimited meter files, for holding the reader against: a CSV library, a text a cell, a date
 // object a stamp. It knows the files it is given (their delimiter, decimal mark and kind of stamp) and finds out nothing else.
 import Papa from 'papaparse';
+import { slowFillers } from './slow-fillers.js';
+import { byHeader, type SlowLong, type TurnedRows, turned } from './slow-long-rows.js';
 import { slowMean } from './slow-mean.js';
 
 /** What is known of a file beforehand. */
@@ -10,6 +12,20 @@ export interface Dialect {
   dates: 'ymd' | 'dmy';
   /** which end of the interval a stamp marks; midnight may stand under the ending day */
   stamp: 'begin' | 'end' | 'endOldDate';
+  /** where a file that has a row for each channel and moment has what; left out where it has a row a moment */
+  long?: SlowLong;
+}
+
+/** What a file comes to, intervals by the beginning of each [s]. */
+export interface SlowReadingOf {
+  intervalS: number;
+  rows: Map<number, SlowRow>;
+  /** numbers left out because they stand for missing ones */
+  fillers: number;
+  /** channels that no record is made of */
+  leftOut: ReadonlySet<string>;
+  /** rows with nothing but words in one cell, such as a remark between the rows of data */
+  remarks: number;
 }
 
 /** One interval: kW, lagging and leading kvar. */
@@ -23,23 +39,84 @@ export class SlowRefusal extends Error {}
  * @returns intervals by the beginning of each [s]
  * @throws SlowRefusal where it should be refused or asked about
  */
-export function readSlowly(bytes: Uint8Array, dialect: Dialect): { intervalS: number; rows: Map<number, SlowRow> } {
+export function readSlowly(bytes: Uint8Array, dialect: Dialect): SlowReadingOf {
   const { data, errors } = Papa.parse<string[]>(slowText(bytes), { delimiter: dialect.delimiter, newline: '\n' });
   const table = data.map((cells) => cells.map((cell) => cell.trim()));
-  const headerAt = table.findIndex(
-    (cells) =>
-      cells.some((cell) => UNIT.test(cell)) && !cells.some((cell) => /^[\d.,]+$|^\d+[-/.]\d+[-/.]\d/.test(cell)),
-  );
+  const headerAt = table.findIndex((cells) => isHeader(cells, dialect));
   if (headerAt < 0) throw new SlowRefusal('no header');
   const broken = errors.find(({ type, row = 0 }) => type === 'Quotes' && row >= headerAt);
   if (broken !== undefined) throw new SlowRefusal(broken.message);
-  const header = table[headerAt]!.map((name) => name.normalize('NFD').replace(/\p{M}/gu, ''));
-  const columns = columnsOf(header, table.slice(headerAt + 1), dialect);
-  const body = table
+  const rows = table
     .slice(headerAt + 1)
     .filter((cells) => cells.some((cell) => cell !== '') && cells.join('\n') !== table[headerAt]!.join('\n'));
+  const full = rows.filter((cells) => !isRemark(cells));
+  const { header, body, leftOut } = momentRows(table[headerAt]!, full, dialect);
+  const columns = columnsOf(header.map(plain), body, dialect);
   const read = body.map((cells) => rowOf(cells, header, columns, dialect));
-  return onGrid(read, columns, dialect);
+  return { ...underFillers(read, columns, dialect), leftOut, remarks: rows.length - full.length };
+}
+
+const plain = (name: string) => name.normalize('NFD').replace(/\p{M}/gu, '');
+
+function isRemark(cells: string[]): boolean {
+  const said = cells.filter((cell) => cell !== '');
+  return said.length === 1 && /^[^\d]*\p{L}[^\d]*\p{L}{3}/u.test(said[0]!);
+}
+
+function isHeader(cells: string[], { long }: Dialect): boolean {
+  if (cells.some((cell) => /^[\d.,]+$|^\d+[-/.]\d+[-/.]\d/.test(cell))) return false;
+  return long === undefined ? cells.some((cell) => UNIT.test(cell)) : cells.filter((cell) => cell !== '').length > 2;
+}
+
+/** The rows of moments, made of those of channels where the file has these. */
+function momentRows(header: string[], rows: string[][], dialect: Dialect): TurnedRows {
+  const { long, dates } = dialect;
+  if (long === undefined) return { header, body: rows, leftOut: new Set() };
+  for (const cells of rows) {
+    refuseWidth(cells, header);
+    if (cells[long.channel] === '') throw new SlowRefusal('a channel without a name');
+  }
+  const momentOf = (stamp: string) => {
+    const { clockS, offsetS } = stampOf(stamp, dates);
+    return `${clockS} ${offsetS}`;
+  };
+  return turned(rows, byHeader(header, long), momentOf);
+}
+
+type Gridded = Omit<SlowReadingOf, 'leftOut' | 'remarks'>;
+
+/** Numbers that may stand for missing ones: as values and as gaps, where that makes no difference. */
+function underFillers(read: ReadRow[], columns: Columns, dialect: Dialect): Gridded {
+  const used = [...(read[0]?.values.keys() ?? [])];
+  const found = used.map((column) => ({ column, ...slowFillers(read.map(({ values }) => values.get(column)!)) }));
+  const reading = (isGap: (one: (typeof found)[0], row: number) => boolean): Gridded | SlowRefusal => {
+    let fillers = 0;
+    const left = read.map((row, at) => {
+      const gaps = found.filter((one) => isGap(one, at)).map(({ column }) => column);
+      fillers += gaps.length;
+      return { ...row, values: new Map([...row.values].map(([k, value]) => [k, gaps.includes(k) ? null : value])) };
+    });
+    try {
+      return { ...onGrid(left, columns, dialect), fillers };
+    } catch (problem) {
+      if (problem instanceof SlowRefusal) return problem;
+      throw problem;
+    }
+  };
+  const asGaps = reading(({ gaps, open }, row) => gaps.has(row) || open.has(row));
+  if (found.every(({ open }) => open.size === 0)) return soundOf(asGaps);
+  const asValues = reading(({ gaps }, row) => gaps.has(row));
+  // a reading that cannot be is no answer to the question
+  if (asGaps instanceof SlowRefusal) return soundOf(asValues);
+  if (asValues instanceof SlowRefusal) return asGaps;
+  const same = ({ intervalS, rows }: Gridded) => JSON.stringify([intervalS, ...rows].sort());
+  if (same(asGaps) !== same(asValues)) throw new SlowRefusal('a number that may stand for a missing one');
+  return asGaps;
+}
+
+function soundOf(reading: Gridded | SlowRefusal): Gridded {
+  if (reading instanceof SlowRefusal) throw reading;
+  return reading;
 }
 
 /**
@@ -119,11 +196,15 @@ interface ReadRow {
 }
 
 function rowOf(cells: string[], header: string[], columns: Columns, dialect: Dialect): ReadRow {
-  const extra = cells.slice(header.length).some((cell) => cell !== '');
-  if (cells.length < header.length || extra) throw new SlowRefusal(`${cells.length} cells`);
+  refuseWidth(cells, header);
   const stamp = stampOf(cells[columns.time]!, dialect.dates);
   const used = [columns.kw, columns.lagging, columns.leading, columns.signed].filter((column) => column !== null);
   return { ...stamp, values: new Map(used.map((column) => [column, numberOf(cells[column.at]!, dialect.decimal)])) };
+}
+
+function refuseWidth(cells: string[], header: string[]): void {
+  const extra = cells.slice(header.length).some((cell) => cell !== '');
+  if (cells.length < header.length || extra) throw new SlowRefusal(`${cells.length} cells`);
 }
 
 function stampOf(text: string, order: 'ymd' | 'dmy') {

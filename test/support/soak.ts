@@ -13,3 +13,12 @@ export const SOAKED = process.env.VARWRIGHT_SOAK === '1';
 export function runs(usual: number, soaked: number): number {
   return SOAKED ? soaked : usual;
 }
+
+/**
+ * Writes what the long run came to; nothing in any other.
+ * @param name of what was tried
+ * @param totals counts and sizes by name
+ */
+export function tellTotals(name: string, totals: object): void {
+  if (SOAKED) process.stdout.write(`${name}: ${JSON.stringify(totals)}\n`);
+}

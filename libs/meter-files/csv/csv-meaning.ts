@@ -42,6 +42,8 @@ export interface ReadRows {
   readonly sided: ReadonlySet<number>;
   /** columns of numbers, counted from 0, in the order of `rows.values` */
   readonly columns: readonly number[];
+  /** channels that hold nothing a record is made of, in a file that has a row for each channel and moment */
+  readonly leftOut?: ReadonlySet<string>;
   /**
    * The numbers of a column, an open decimal mark taken as such.
    * @param column counted from 0

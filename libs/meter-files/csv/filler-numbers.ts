@@ -4,7 +4,7 @@ import { note } from '../note.js';
 import { RowSet } from '../row-set.js';
 import { isRecordForm } from '../write-record-csv.js';
 import type { CsvLayout } from './csv-layout.js';
-import type { FillerNumbers, ReadRows } from './csv-meaning.js';
+import type { CsvFile, CsvMeaning, FillerNumbers, ReadRows } from './csv-meaning.js';
 
 /** Numbers that programs write where they have none: nines, and the ends of whole numbers of 16 and 32 bits. */
 const FILLERS = new Set([
@@ -19,7 +19,8 @@ const NEAR_RATIO = 0.2;
 
 /**
  * Takes out numbers that stand for a missing value: below zero where nothing else of the column is, and beyond three times
- * anything else. Another that has no neighbour like it stays and has to be asked about. A record in the program's own form
+ * anything else. Another that has no neighbour like it stays and has to be asked about, but for a run of them that lies
+ * between two like it, one on either side. A record in the program's own form
  * leaves out what is missing, and has none.
  * @param reader rows as read; what is taken out becomes NaN
  * @param layout its columns
@@ -41,14 +42,23 @@ export function takeFillers(reader: ReadRows, layout: CsvLayout, { fillers }: Me
 }
 
 /**
- * What is worth saying of them.
- * @param found what was taken out
- * @param layout names of the columns
+ * What is worth saying of them: those that were taken out, and those that may be values as well but leave no record if
+ * they are, so that nobody is asked.
+ * @param file its rows and what was taken out
+ * @param meaning what the file is read under
  */
-export function fillerNotes({ taken, value, columns }: FillerNumbers, { names }: CsvLayout): Remark[] {
-  if (taken === 0) return [];
+export function fillerNotes({ layout: { names }, fillers, reader }: CsvFile, meaning: CsvMeaning): Remark[] {
+  const wanted = new Set(meaning.choice.columns.map(({ column }) => column));
+  const open = [...(meaning.fillers === 'missing' ? (fillers.open ?? []) : [])]
+    .map(([k, rows]) => ({ k, rows, column: reader.columns[k]! }))
+    .filter(({ column }) => wanted.has(column));
+  const values = open.reduce((sum, { rows }) => sum + rows.size, fillers.taken);
+  if (values === 0) return [];
+  const [first] = open;
+  const value = fillers.taken > 0 ? fillers.value : reader.rows.values[first!.k]![[...first!.rows][0]!]!;
+  const columns = [...new Set([...fillers.columns, ...open.map(({ column }) => column)])];
   const listed = columns.map((column) => names[column] || `column ${column + 1}`).join(', ');
-  return [note('fillers-left-out', { values: taken, value, columns: listed })];
+  return [note('fillers-left-out', { values, value, columns: listed })];
 }
 
 /** Every file passes it: four small numbers at a time are passed over, which takes half as long as one by one. */
@@ -72,18 +82,39 @@ function isFiller(value: number): boolean {
 
 function takeFrom(values: Float64Array, found: FillerNumbers, all: boolean): RowSet {
   const open = new RowSet();
-  const { least, most } = rangeOf(values);
+  const range = rangeOf(values);
+  let run: Run = { from: 0, end: 0, before: Number.NaN, after: Number.NaN };
   for (let row = 0; row < values.length; row++) {
     const value = values[row]!;
     if (!isFiller(value)) continue;
-    const below = value < 0 && !(least < 0);
-    const far = Math.abs(value) > FAR_TIMES * Math.max(most, -least);
-    if ((below && far) || all) {
+    if (row >= run.end) run = runFrom(values, row);
+    if (all || isOutside(value, range)) {
       if (found.taken++ === 0) found.value = value;
       values[row] = Number.NaN;
-    } else if (!goesOn(values, row)) open.add(row);
+    } else if (!goesOn(value, row, run)) open.add(row);
   }
   return open;
+}
+
+/** Such numbers on end. */
+interface Run {
+  from: number;
+  /** row behind the last */
+  end: number;
+  /** the numbers on either side; NaN where there is none */
+  before: number;
+  after: number;
+}
+
+function runFrom(values: Float64Array, from: number): Run {
+  let end = from + 1;
+  while (end < values.length && isFiller(values[end]!)) end++;
+  return { from, end, before: values[from - 1] ?? Number.NaN, after: values[end] ?? Number.NaN };
+}
+
+/** Below zero where no other number is, and far from all others. */
+function isOutside(value: number, { least, most }: { least: number; most: number }): boolean {
+  return value < 0 && !(least < 0) && Math.abs(value) > FAR_TIMES * Math.max(most, -least);
 }
 
 /** Least and greatest of the other numbers; both 0 where there are none but zeros. */
@@ -97,11 +128,16 @@ function rangeOf(values: Float64Array): { least: number; most: number } {
   return { least, most };
 }
 
-/** Whether the nearest number on either side that is no such number itself is about as large. */
-function goesOn(values: Float64Array, row: number): boolean {
-  const value = values[row]!;
-  return [-1, 1].some((step) => {
-    const beside = values[row + step] ?? Number.NaN;
-    return !isFiller(beside) && Math.abs(beside - value) <= NEAR_RATIO * Math.abs(value);
-  });
+/**
+ * Whether the column goes on with a number: a neighbour that is no such number itself is about as large, or the column
+ * passes through it, however long it stands still there, as a register does.
+ */
+function goesOn(value: number, row: number, { from, end, before, after }: Run): boolean {
+  const [behind, ahead] = [isNear(value, before), isNear(value, after)];
+  if ((behind && row === from) || (ahead && row === end - 1)) return true;
+  return behind && ahead && before <= value === value <= after;
+}
+
+function isNear(value: number, beside: number): boolean {
+  return Math.abs(beside - value) <= NEAR_RATIO * Math.abs(value);
 }

@@ -24,6 +24,8 @@ const MOST_NUMBERS = 3 * MAX_INTERVALS;
 /** A channel is looked for so many rows ahead before all rows are listed by their stamp. */
 const ROWS_AHEAD = 64;
 const MOST_LEFT_OUT = 200;
+/** A longer name is no channel's, and as many of them as there are rows would have to be kept [characters]. */
+const LONGEST_NAME = 300;
 
 /** A channel: its column of numbers, the row it had last, and the rows it has. */
 interface Channel {
@@ -47,7 +49,6 @@ export class LongRows implements ReadRows {
   readonly texts: SkippedRows = { count: 0, first: 0 };
   readonly sided: ReadonlySet<number> = new Set();
   readonly columns: number[] = [];
-  /** channels that hold nothing a record is made of */
   readonly leftOut = new Set<string>();
   readonly #names: string[] = [];
   readonly #layout: CsvLayout;
@@ -137,14 +138,14 @@ export class LongRows implements ReadRows {
     const key = unit < 0 ? said : `${said}\n${cells.text(unit)}`;
     const known = this.#channels.get(key);
     if (known !== undefined) return known;
+    const place = { row, column: channel + 1 };
     if (said === '') {
-      this.problems.add({
-        code: 'missing',
-        row,
-        column: channel + 1,
-        expected: 'the name of the channel',
-        found: 'nothing',
-      });
+      this.problems.add({ code: 'missing', ...place, expected: 'the name of the channel', found: 'nothing' });
+      return null;
+    }
+    if (key.length > LONGEST_NAME) {
+      const expected = `a channel of at most ${LONGEST_NAME} characters, its unit among them`;
+      this.problems.add({ code: 'too-large', ...place, expected, found: shown(said) });
       return null;
     }
     const name = withUnit(said, unit < 0 ? unitOf(this.#layout.names[value] ?? '') : cells.text(unit));

@@ -9,7 +9,7 @@ import { RowReader } from './row-reader.js';
 /** Rows of further meters are counted only. */
 const MOST_METERS = 50;
 /** Rows that are kept while it is open which of several meters is meant; each keeps its first ones in any case. */
-const MOST_SHOWN = 2_000_000;
+export const MOST_SHOWN = 2_000_000;
 const FIRST_SHOWN = 1000;
 
 /** What reads the rows of one meter. */
@@ -28,6 +28,7 @@ export class MeterRows {
   first: MeterReader;
   readonly #layout: CsvLayout;
   readonly #map: MeterMap;
+  readonly #mostShown: number;
   readonly #readers = new Map<string, MeterReader>();
   /** names met, with those whose rows are not kept */
   readonly #names = new Set<string>();
@@ -38,7 +39,13 @@ export class MeterRows {
   /** rows of the file up to which meters are shown; 0 while all are */
   #shownTo = 0;
 
-  constructor(layout: CsvLayout, map: MeterMap) {
+  /**
+   * @param layout of the file
+   * @param map what a person says
+   * @param mostShown rows that are kept of all meters together while several are met
+   */
+  constructor(layout: CsvLayout, map: MeterMap, mostShown: number = MOST_SHOWN) {
+    this.#mostShown = mostShown;
     this.#layout = layout;
     this.#map = map;
     this.first = readerFor(layout, map);
@@ -85,7 +92,7 @@ export class MeterRows {
 
   /** Whether enough is kept of a meter to show what it is: the one that is chosen is read again, and alone. */
   #isShown(rows: number, rowNumber: number): boolean {
-    if (this.#rows < MOST_SHOWN || rows < FIRST_SHOWN) return false;
+    if (this.#rows < this.#mostShown || rows < FIRST_SHOWN) return false;
     if (this.#shownTo > 0) return true;
     // a repeated header is no second meter
     if ([...this.#readers.values()].filter((reader) => reader.rows.count > 0).length < 2) return false;

@@ -4,12 +4,13 @@ import type { MeterBytes } from '../meter-bytes.js';
 import type { MeterReading, ReadOptions } from '../meter-format.js';
 import { note } from '../note.js';
 import { closeReading } from '../record/close-reading.js';
+import { strangeFile } from '../unknown-format.js';
 import { type CsvLayout, findLayout, untoldColumns } from './csv-layout.js';
 import type { CsvFile } from './csv-meaning.js';
 import { DayRows } from './day-rows.js';
-import { fillerNotes, takeFillers } from './filler-numbers.js';
+import { takeFillers } from './filler-numbers.js';
 import { LongRows } from './long-rows.js';
-import { type MeterReader, MeterRows } from './meter-rows.js';
+import { type MeterReader, MeterRows, MOST_SHOWN } from './meter-rows.js';
 import { QuickRows } from './quick-rows.js';
 import { LONGEST_ROW_BYTES, RowBuffer } from './row-buffer.js';
 import { RowCells } from './row-cells.js';
@@ -20,23 +21,40 @@ import { ReadingRoom } from './shown-reading.js';
 /** A header is looked for in so much of the file at once; what lies before it is dropped [bytes]. */
 const VIEW_BYTES = 262_144;
 
+/** Which lane the rows go through: the quick one as far as it goes, or the general one alone. */
+export type Lane = 'quick' | 'general';
+
+/** How a file is read; the record does not depend on it. */
+export interface Ways {
+  /** the general lane alone gives the same record, slower */
+  lane: Lane;
+  /** rows that are kept while it is open which of several meters is meant */
+  mostShown: number;
+}
+
+const USUAL_WAYS: Ways = { lane: 'quick', mostShown: MOST_SHOWN };
+
 /**
  * Reads delimited text.
  * @param source the file
  * @param options what is said about it
- * @param lane the general lane alone gives the same record, slower
+ * @param ways how it is read
  * @returns the record and its quality
  * @throws InputProblem where it can't be read, Question where it can be read in several ways
  */
-export async function readCsv(source: MeterBytes, options: ReadOptions, lane: Lane = 'quick'): Promise<MeterReading> {
+export async function readCsv(
+  source: MeterBytes,
+  options: ReadOptions,
+  ways: Partial<Ways> = {},
+): Promise<MeterReading> {
   const map = options.map ?? {};
   const buffer = new RowBuffer(source);
-  const layout = await layoutOf(buffer, options);
+  const layout = await layoutOf(buffer, options, source.head);
   const file = { layout, map, options };
-  const read = layout.days === null ? await meterRead(buffer, file, lane) : await daysRead(buffer, file);
+  const read =
+    layout.days === null ? await meterRead(buffer, file, { ...USUAL_WAYS, ...ways }) : await daysRead(buffer, file);
   const result = settleMeaning(read.file);
-  const { fillers } = read.file;
-  const notes = [...fileNotes(source, read.file), ...read.notes, ...fillerNotes(fillers, read.file.layout)];
+  const notes = [...fileNotes(source, read.file), ...read.notes];
   return closeReading({ ...result, notes: [...notes, ...result.notes] }, map);
 }
 
@@ -48,9 +66,9 @@ interface Read {
 }
 
 /** Rows of intervals, of one meter or of several. */
-async function meterRead(buffer: RowBuffer, file: UnreadFile, lane: Lane): Promise<Read> {
+async function meterRead(buffer: RowBuffer, file: UnreadFile, { lane, mostShown }: Ways): Promise<Read> {
   const { layout, map } = file;
-  const rows = new MeterRows(layout, map);
+  const rows = new MeterRows(layout, map, mostShown);
   await readRows(buffer, layout, rows, {
     quickReader: lane === 'general' || rows.first instanceof LongRows ? null : rows.first,
     sizeBytes: file.options.sizeBytes ?? 0,
@@ -60,18 +78,13 @@ async function meterRead(buffer: RowBuffer, file: UnreadFile, lane: Lane): Promi
   if (reader === undefined || reader.rows.count === 0) refuseEmpty();
   if (readers.size > 1) askWhichMeter(file, readers, { meters, shownTo });
   const notes = map.meter === undefined ? [] : [note('meter-chosen', { meter: map.meter, others: meters - 1 })];
-  return { file: fileOf(file, reader), notes: [...notes, ...longNotes(reader)] };
+  return { file: fileOf(file, reader), notes };
 }
 
 /** A file with the rows of one meter, whose layout may be known only now. */
 function fileOf(file: UnreadFile, reader: MeterReader): CsvFile {
   const layout = reader instanceof LongRows ? reader.layoutOf(file.map) : file.layout;
   return { ...file, layout, reader, fillers: takeFillers(reader, layout, file.map) };
-}
-
-function longNotes(reader: MeterReader): Remark[] {
-  if (!(reader instanceof LongRows) || reader.leftOut.size === 0) return [];
-  return [note('channels-left-out', { channels: [...reader.leftOut].join(', ') })];
 }
 
 /** A row a day; the rows themselves say what they hold. */
@@ -121,7 +134,7 @@ function firstOf(file: UnreadFile, reader: MeterReader, room: ReadingRoom) {
   }
 }
 
-async function layoutOf(buffer: RowBuffer, { map = {} }: ReadOptions): Promise<CsvLayout> {
+async function layoutOf(buffer: RowBuffer, { map = {} }: ReadOptions, head: Uint8Array): Promise<CsvLayout> {
   let untold: Problem | null = null;
   for (;;) {
     while (isShort(buffer) && (await buffer.more())) buffer.refuseEndlessRow();
@@ -138,7 +151,7 @@ async function layoutOf(buffer: RowBuffer, { map = {} }: ReadOptions): Promise<C
   }
   if (untold !== null) throw new InputProblem([untold]);
   const expected = 'a meter file: delimited text under a header row, or NEM12';
-  throw new InputProblem([{ code: 'unknown-format', expected, found: 'a file without a row of column names' }]);
+  throw new InputProblem([strangeFile(head, { expected, found: 'a file without a row of column names' })]);
 }
 
 /** Reads on until a further row is whole: in a row that only grows there is nothing new to look for. */
@@ -164,9 +177,6 @@ function dropRows(buffer: RowBuffer): void {
   for (let at = buffer.start; at <= keep; at++) if (bytes[at] === rowEnd) buffer.rowsBefore++;
   buffer.start = keep + 1;
 }
-
-/** Which lane the rows go through: the quick one as far as it goes, or the general one alone. */
-export type Lane = 'quick' | 'general';
 
 interface RowTaker {
   take(cells: RowCells, rowNumber: number): void;

@@ -9,6 +9,7 @@ import type { CsvFile, CsvMeaning } from './csv-meaning.js';
 import { readUnder } from './csv-reading.js';
 import { energyColumns, movesOf } from './energy-registers.js';
 import { hasNegative } from './power-factor.js';
+import { fillerNotes } from './filler-numbers.js';
 import { ReadingRoom, type ShownUnder, shownUnder } from './shown-reading.js';
 
 /** What a file leaves open, with every answer there is. */
@@ -155,19 +156,30 @@ function settledMeaning(
   { all, room }: { all: readonly CsvMeaning[]; room: ReadingRoom },
 ): CsvMeaning {
   const attempts: Attempt[] = [];
+  const conflicts = new Map<CsvMeaning['choice'], ConflictingRows>();
   for (const meaning of all) {
     try {
       attempts.push({ meaning, ...shownUnder(file, meaning, room) });
     } catch (problem) {
       if (!(problem instanceof InputProblem)) throw problem;
+      if (problem instanceof ConflictingRows) conflicts.set(meaning.choice, problem);
     }
   }
+  keepConflicting(conflicts, attempts);
   const [first] = attempts;
   // none can be: the reading as a whole is refused with all its problems
   if (first === undefined) return all[0]!;
   const questions = (Object.keys(points) as Point[]).flatMap((point) => asked(point, attempts));
   if (questions.length > 0) throw new Question(questions);
   return first.meaning;
+}
+
+/** Rows that disagree are asked about: they do not say that the columns they stand in are the wrong ones. */
+function keepConflicting(conflicts: Map<CsvMeaning['choice'], ConflictingRows>, attempts: readonly Attempt[]): void {
+  if (attempts.length === 0) return;
+  for (const [choice, problem] of conflicts) {
+    if (!attempts.some(({ meaning }) => meaning.choice === choice)) throw problem;
+  }
 }
 
 function meanings(points: OpenPoints): CsvMeaning[] {
@@ -249,11 +261,22 @@ function mapOf(point: Point, meaning: CsvMeaning): MeterMap {
   }
 }
 
-function settledNotes({ reader, map }: CsvFile, points: OpenPoints, meaning: CsvMeaning): Remark[] {
+/** Channels whose rows no record is made of; of those that measure something, the ones that another is taken before. */
+function channelNotes({ reader: { leftOut }, layout: { names } }: CsvFile, { choice }: CsvMeaning): Remark[] {
+  if (leftOut === undefined) return [];
+  const used = new Set(choice.columns.map(({ column }) => column));
+  const channels = [...leftOut, ...names.filter((_, column) => !used.has(column))];
+  return channels.length === 0 ? [] : [note('channels-left-out', { channels: channels.join(', ') })];
+}
+
+function settledNotes(file: CsvFile, points: OpenPoints, meaning: CsvMeaning): Remark[] {
+  const { reader, map } = file;
   const { mark, rows } = reader;
   const divided = meaning.decimal === ',' ? mark.openDots.count : meaning.decimal === '.' ? mark.openCommas.count : 0;
   const settledDates = (rows.dateForm === 'slashed' || rows.dateForm === 'short') && map.dateOrder === undefined;
   return [
+    ...channelNotes(file, meaning),
+    ...fillerNotes(file, meaning),
     ...(meaning.decimal === ',' && map.decimal === undefined ? [note('decimal-mark-settled', { mark: ',' })] : []),
     ...(divided > 0 ? [note('thousands-divided', { numbers: divided })] : []),
     ...(settledDates && points.order.length === 1 ? [note('date-order-settled', { order: meaning.order })] : []),

@@ -1,5 +1,5 @@
 import { pipeline, Readable } from 'node:stream';
-import { crc32, createInflateRaw } from 'node:zlib';
+import { constants, crc32, createInflateRaw, inflateRawSync } from 'node:zlib';
 import { type Entry, fromRandomAccessReaderPromise, RandomAccessReader, type ZipFile } from 'yauzl';
 import { InputProblem } from '#libs/engine/index.js';
 import { damaged } from '../sheet/read-sheet-text.js';
@@ -15,6 +15,13 @@ const RATIO_FREE_BYTES = 4_194_304;
 const INFLATE_CHUNK_BYTES = 65_536;
 const STORED = 0;
 const DEFLATED = 8;
+/** What an archive begins with: a file, the end of an empty one, or the mark of one in pieces (APPNOTE 6.3.10, 4.3 and 8.5). */
+const ARCHIVE_STARTS = ['PK\u0003\u0004', 'PK\u0005\u0006', 'PK\u0007\u0008'];
+const START_BYTES = 4;
+/** Smaller than an empty archive is none [bytes]. */
+const LEAST_ARCHIVE_BYTES = 22;
+/** So much of a packed part is looked at for how it begins, more of it only where the little before said nothing [bytes]. */
+const LOOKS_BYTES = [16, 64, 256, 1024];
 
 /** The parts of a ZIP archive (APPNOTE 6.3.10, as far as ECMA-376 part 2 allows it), each bounded by what it says and by what it gives. */
 export class ZipArchive {
@@ -33,7 +40,7 @@ export class ZipArchive {
   /**
    * Reads the directory.
    * @param file the archive
-   * @throws InputProblem where it is damaged, or holds more than any workbook
+   * @throws InputProblem where it is damaged, holds more than any workbook, or another archive
    */
   static async open(file: SpooledFile): Promise<ZipArchive> {
     const zip = await ofArchive('archive', () =>
@@ -51,7 +58,21 @@ export class ZipArchive {
         entries.set(key, entry);
       }
     });
-    return new ZipArchive(file, zip, entries);
+    const archive = new ZipArchive(file, zip, entries);
+    for (const entry of entries.values()) await archive.#refuseNested(entry);
+    return archive;
+  }
+
+  /** A part that is an archive itself is refused by its name, read or not: nobody sees what it holds. */
+  async #refuseNested(entry: Entry): Promise<void> {
+    const { fileName, compressedSize, uncompressedSize } = entry;
+    if (uncompressedSize < LEAST_ARCHIVE_BYTES || entry.isEncrypted()) return;
+    const { fileDataStart } = await ofArchive(fileName, () =>
+      this.#zip.readLocalFileHeaderPromise(entry, { minimal: true }),
+    );
+    const packed = await this.#file.read(fileDataStart, Math.min(compressedSize, LOOKS_BYTES.at(-1)!));
+    const start = Buffer.from(startOf(packed, entry.compressionMethod)).toString('latin1', 0, START_BYTES);
+    if (ARCHIVE_STARTS.includes(start)) throw damaged(fileName, 'a part that is no archive itself', 'a nested archive');
   }
 
   /** Whether there is such a part, whatever the case of its letters. */
@@ -94,6 +115,22 @@ export class ZipArchive {
     if (seenBytes !== entry.uncompressedSize) refuseLie(entry, String(seenBytes));
     if (sum !== entry.crc32) throw damaged(name, 'a part with the check sum of the directory', 'another one');
   }
+}
+
+/** The first bytes of a part; none where they can't be told, which is said once the part is read. */
+function startOf(packed: Uint8Array, method: number): Uint8Array {
+  if (method === STORED) return packed;
+  if (method !== DEFLATED) return new Uint8Array(0);
+  let start: Uint8Array = new Uint8Array(0);
+  for (const bytes of LOOKS_BYTES) {
+    if (start.length >= START_BYTES) break;
+    try {
+      start = inflateRawSync(packed.subarray(0, bytes), { finishFlush: constants.Z_SYNC_FLUSH });
+    } catch {
+      break;
+    }
+  }
+  return start;
 }
 
 function refuseEntry(entry: Entry): void {

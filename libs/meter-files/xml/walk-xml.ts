@@ -1,7 +1,7 @@
 import sax, { type SAXParser } from 'sax';
 import { shown } from '#libs/contract/shown.js';
 import { InputProblem, type Problem } from '#libs/engine/index.js';
-import { forbiddenAt, LONGEST_FORBIDDEN } from './forbidden-xml.js';
+import { forbidden, forbiddenAt, LONGEST_FORBIDDEN } from './forbidden-xml.js';
 import { XmlText } from './xml-text.js';
 
 /** How large a file may be in every way but its length. */
@@ -55,7 +55,7 @@ const NONE: Readonly<Record<string, string>> = {};
 export async function walkXml(text: XmlText, visitor: XmlVisitor, bounds: XmlBounds = XML_BOUNDS): Promise<void> {
   const walk = new XmlWalk(visitor, bounds);
   for (let piece = await text.next(); piece !== null; piece = await text.next()) walk.take(piece);
-  walk.end();
+  walk.end(text.broken);
 }
 
 interface Opened {
@@ -103,10 +103,7 @@ class XmlWalk {
     const at = forbiddenAt(text);
     if (at >= 0) {
       this.#write(text.slice(0, at));
-      const word = text[at] === '<';
-      const found = shown(word ? text.slice(at, at + 20).split(/\s/)[0] : text[at]);
-      const expected = word ? 'XML without document type or entities' : 'characters of XML';
-      this.#refuse({ code: 'unreadable', expected, found });
+      this.#refuse({ code: 'unreadable', ...forbidden(text, at) });
     }
     // the beginning of a declaration may end with the piece
     const last = text.lastIndexOf('<');
@@ -115,8 +112,10 @@ class XmlWalk {
     this.#write(text.slice(0, cut));
   }
 
-  end(): void {
+  /** @param broken what is wrong behind the last piece */
+  end(broken: Problem | null): void {
     this.#write(this.#held);
+    if (broken !== null) this.#refuse(broken);
     if (this.#elements === 0 || this.#stack.length > 0) {
       const found = this.#elements === 0 ? 'no element' : 'the end of the file';
       const expected = this.#elements === 0 ? 'an XML document' : `the end of ${shown(this.#stack.at(-1)?.name)}`;

@@ -5,5 +5,5 @@
  */
 export function xmlStart(head: Uint8Array): string {
   const text = new TextDecoder('latin1').decode(head).trimStart();
-  return /^<(?:\?xml\s|!--|[A-Za-z_])/.test(text) ? text : '';
+  return /^<(?:\?xml\s|!--|!DOCTYPE\s|[A-Za-z_])/i.test(text) ? text : '';
 }

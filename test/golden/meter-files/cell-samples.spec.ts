@@ -155,6 +155,33 @@ describe('numbers that stand for missing values', () => {
     );
     expect(noteCodes(reading)).not.toContain('fillers-left-out');
   });
+
+  it('are left out where they leave no record as values, and it is said with those taken for certain', async () => {
+    const lagging = (...kvar: number[]) =>
+      `Time,kW,lagging kvar,leading kvar\n${kvar.map((one, i) => `2024-05-06 0${i}:00,40,${one},0\n`).join('')}`;
+    const { record } = await readMeterText(lagging(340, 345, -999, 350, -9999, 360));
+    expect(Array.from(record.laggingKvar)).toEqual([340, 345, 350, 360]);
+    expect(record.notes.find(({ code }) => code === 'fillers-left-out')?.values).toEqual({
+      ...{ values: 2, value: -9999, columns: 'lagging kvar' },
+    });
+    // another number below zero is no such number, and is refused
+    expect((await refusalOf(lagging(340, 345, -90, 350))).code).toBe('out-of-range');
+  });
+
+  it('are values where a column stands still at one on its way, and asked about where it comes back', async () => {
+    const through = (...kw: number[]) =>
+      `Time,kW,kvar\n${kw.map((one, i) => `2024-05-06 0${i}:00,${one},20\n`).join('')}`;
+    const read = async (...kw: number[]) => Array.from((await readMeterText(through(...kw))).record.activeKw);
+    expect(await read(998, 999, 999, 999, 1000)).toEqual([998, 999, 999, 999, 1000]);
+    expect(await read(1000, 999, 999, 999, 998)).toEqual([1000, 999, 999, 999, 998]);
+    for (const kw of [
+      [950, 999, 999, 999, 960],
+      [998, 999, 999, 999],
+      [998, 999, 999, 999, 3000],
+    ]) {
+      expect((await questionOf(through(...kw))).questions.map(({ id }) => id)).toEqual(['fillers']);
+    }
+  });
 });
 
 describe('a broken quotation mark', () => {

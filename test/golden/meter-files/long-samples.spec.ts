@@ -66,6 +66,57 @@ describe('a row for each channel and moment', () => {
     expect((await questionOf(twice)).questions.map(({ id }) => id)).toEqual(['keepRow']);
   });
 
+  it('asks which columns are meant, where one of two has rows that disagree', async () => {
+    const text = (first: string, repeated: string) =>
+      lines(
+        'Time,Channel,Value,Unit',
+        `2024-05-06 00:00,${first},40,kW`,
+        '2024-05-06 00:00,Reactive power,20,kvar',
+        ...[1, 2, 3].flatMap((i) => [
+          `2024-05-06 0${i}:00,Active power,${40 + i},kW`,
+          `2024-05-06 0${i}:00,Reactive power,20,kvar`,
+        ]),
+        repeated,
+      );
+    const twice = '2024-05-06 02:00,Active power,99,kW';
+    const ids = async (file: string) => (await questionOf(file)).questions.map(({ id }) => id);
+    // the one interval of the tower would otherwise be the record, since nothing in it disagrees
+    expect(await ids(text('Active tower', twice))).toContain('columns');
+    expect(await ids(text('Active power', twice))).toEqual(['keepRow']);
+    expect(await ids(text('Active tower', ''))).toEqual(['columns']);
+    expect((await readMeterText(text('Active power', ''))).record.beginS).toHaveLength(4);
+  });
+
+  it('names a channel that measures something and is left for another', async () => {
+    const text = lines(
+      'Time,Channel,Value,Unit',
+      ...[0, 1, 2, 3].flatMap((i) => [
+        `2024-05-06 0${i}:00,Active power,${40 + i},kW`,
+        `2024-05-06 0${i}:00,Reactive power,20,${i === 2 ? 'kvar;' : 'kvar'}`,
+      ]),
+    );
+    const { record } = await readMeterText(text);
+    expect(Array.from(record.activeKw)).toEqual([40, 41, 43]);
+    expect(record.notes.find(({ code }) => code === 'channels-left-out')?.values).toEqual({
+      channels: 'Reactive power',
+    });
+    const sound = await readMeterText(text.replace('kvar;', 'kvar'));
+    expect(noteCodes(sound)).not.toContain('channels-left-out');
+  });
+
+  it('is refused at a name that is no channel’s, which would fill the notes', async () => {
+    const text = (name: string) =>
+      lines(
+        'Time,Channel,Value',
+        ...[0, 1, 2].flatMap((i) => [`2024-05-06 0${i}:00,kW,40`, `2024-05-06 0${i}:00,kvar,2`]),
+        `2024-05-06 02:00,${name},1`,
+      );
+    expect((await refusalOf(text('x'.repeat(301)))).problems).toMatchObject([
+      { code: 'too-large', row: 8, column: 2, expected: 'a channel of at most 300 characters, its unit among them' },
+    ]);
+    expect((await readMeterText(text('x'.repeat(300)))).record.beginS).toHaveLength(3);
+  });
+
   it('is refused at a number that is none, with row and column', async () => {
     const text = 'Time,Quantity,Value\n2024-05-06 00:00,kW,40\n2024-05-06 00:00,kvar,2024-05-07\n';
     expect((await refusalOf(text)).problems).toMatchObject([{ code: 'bad-number', row: 3, column: 3 }]);
