@@ -34,11 +34,18 @@ export function slowFormula(expression: string, valueAt: (name: string) => numbe
   return Number(library().evaluate(plain, scope));
 }
 
+/** A working is printed to twelve digits: what comes this near to a whole unit with them was one. */
+const PRINTED_WIDTH = 1e-9;
+
 /**
  * A printed working by a general mathematics library.
  * @param working arithmetic with the values put in
  * @returns the value
  */
 export function slowWorking(working: string): number {
-  return Number(library().evaluate(working.replaceAll('·', '*').replaceAll('−', '-')));
+  const wholeUnits = {
+    ceil: (x: number): number => Math.ceil(x - PRINTED_WIDTH),
+    floor: (x: number): number => Math.floor(x + PRINTED_WIDTH),
+  };
+  return Number(library().evaluate(working.replaceAll('·', '*').replaceAll('−', '-'), wholeUnits));
 }
