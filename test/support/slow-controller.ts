@@ -149,6 +149,8 @@ class SlowBank {
     const before = this.#countsBySize((stage) => stage.on);
     const free = this.#countsBySize((stage) => this.#isFree(stage, beginS));
     const counts = new Map(before);
+    // with no voltage a stage brings nothing nearer
+    if (scale === 0) return counts;
     const d = (): number => wantedKvar - [...counts].reduce((sum, [kvar, count]) => sum + count * kvar * scale, 0);
     let changes = 0;
     while (d() > band && changes < this.#mostSwitchings) {
